@@ -47,6 +47,8 @@ export async function up(knex: Knex): Promise<void> {
       theme text not null default 'system' check (theme in ('system', 'light', 'dark')),
       active boolean not null default true,
       last_seen_at timestamptz,
+      fleet_looked_at timestamptz, -- newest look at the fleet page
+      fleet_looked_before_at timestamptz, -- last look of the visit before this one
       created_at timestamptz not null default now()
     );
     create unique index person_email_key on person (lower(email));
@@ -59,6 +61,12 @@ export async function up(knex: Knex): Promise<void> {
       kept boolean not null default false
     );
     create index session_person on session (user_id);
+
+    create table rate_limit ( -- rate-limiter-flexible counts here, so that several processes share the count
+      key varchar(255) primary key,
+      points int4 not null default 0,
+      expire int8
+    );
 
     create table audit_entry (
       id int8 generated always as identity primary key,
@@ -77,7 +85,7 @@ export async function up(knex: Knex): Promise<void> {
 
 export async function down(knex: Knex): Promise<void> {
   await knex.raw(`
-    drop table audit_entry, session, person, organisation, installation;
+    drop table audit_entry, rate_limit, session, person, organisation, installation;
     drop extension if exists btree_gist;
   `);
 }

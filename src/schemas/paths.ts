@@ -20,6 +20,7 @@ export const paths = {
     fleetCsv: () => '/api/fleet.csv',
     site: (site: string) => `/api/sites/${site}`,
     siteEvents: (site: string) => `/api/sites/${site}/events`,
+    acknowledge: (site: string) => `/api/sites/${site}/acknowledge`,
     string: (string: string) => `/api/strings/${string}`,
     stringHistory: (string: string) => `/api/strings/${string}/history`,
     stringHistoryCsv: (string: string) => `/api/strings/${string}/history.csv`,

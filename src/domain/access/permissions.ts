@@ -12,6 +12,7 @@ export const PERMISSIONS = {
   'string.read': STAFF,
   'telemetry.export': STAFF,
   'shutdown.read': STAFF,
+  'hazard.acknowledge': STAFF,
   'roll_call.read': STAFF,
   'roll_call.run': ['manager', 'technician'],
   'customer_page.read': ROLES,

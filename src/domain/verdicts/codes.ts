@@ -61,6 +61,7 @@ export const EVENT_KINDS = [
   'roll_call_started', // detail: {person, personOnSite}
   'roll_call_stopped',
   'roster_changed',
+  'hazard_acknowledged', // detail: {key, headline, person}
 ] as const;
 export type EventKind = (typeof EVENT_KINDS)[number];
 

@@ -1,0 +1,63 @@
+/**
+ * The one CSV writer. RFC 4180: CRLF ends every record, a field with a quote, comma or line break is quoted
+ * and its quotes doubled. UTF-8 with a byte-order mark, without which spreadsheets misread units and names.
+ *
+ * Text that a spreadsheet would take for a formula gets an apostrophe in front (OWASP, "CSV Injection":
+ * = + - @ tab, carriage return, and their full-width forms). Numbers are written as numbers.
+ */
+export type Cell = string | number | boolean | Date | null | undefined;
+
+export interface Column<Row> {
+  /** With the unit where there is one: "voltage (V)". */
+  header: string;
+  value: (row: Row) => Cell;
+}
+
+const FORMULA_START = /^[\s]*[=+\-@\t\r\uFF1D\uFF0B\uFF0D\uFF20]/;
+const NEEDS_QUOTES = /[",\r\n]|^\s|\s$/;
+
+/** One cell. Times are ISO 8601 in UTC; null, undefined and what is not finite are empty. */
+export function csvField(cell: Cell): string {
+  if (cell === null || cell === undefined) return '';
+  if (typeof cell === 'number') return Number.isFinite(cell) ? String(cell) : '';
+  if (typeof cell === 'boolean') return cell ? 'yes' : 'no';
+  if (cell instanceof Date) return Number.isNaN(cell.getTime()) ? '' : cell.toISOString();
+  const harmless = FORMULA_START.test(cell) ? `'${cell}` : cell;
+  return NEEDS_QUOTES.test(harmless) ? `"${harmless.replaceAll('"', '""')}"` : harmless;
+}
+
+/** The records one by one, the header first, each with its CRLF. */
+export function* csvRecords<Row>(columns: readonly Column<Row>[], rows: Iterable<Row>): Generator<string> {
+  yield `${columns.map((c) => csvField(c.header)).join(',')}\r\n`;
+  for (const row of rows) yield `${columns.map((c) => csvField(c.value(row))).join(',')}\r\n`;
+}
+
+export const BYTE_ORDER_MARK = '\uFEFF';
+
+export function csvText<Row>(columns: readonly Column<Row>[], rows: Iterable<Row>): string {
+  let text = BYTE_ORDER_MARK;
+  for (const record of csvRecords(columns, rows)) text += record;
+  return text;
+}
+
+/** A download. `name` without ending; what a header or a file system would choke on becomes a dash. */
+export function csvResponse<Row>(
+  name: string,
+  columns: readonly Column<Row>[],
+  rows: Iterable<Row>,
+): Response {
+  const plain =
+    name
+      .normalize('NFKD')
+      .replace(/\p{M}/gu, '')
+      .replace(/[^A-Za-z0-9._-]+/g, '-')
+      .replace(/^[-.]+|-+$/g, '') || 'wakeline';
+  return new Response(csvText(columns, rows), {
+    headers: {
+      'content-type': 'text/csv; charset=utf-8; header=present',
+      'content-disposition': `attachment; filename="${plain}.csv"`,
+      'cache-control': 'no-store',
+      'x-content-type-options': 'nosniff',
+    },
+  });
+}
