@@ -148,6 +148,7 @@ export async function up(knex: Knex): Promise<void> {
     grant delete on rollup_dirty, late_frame to wakeline_ingest;
     revoke execute on function ensure_days(date, date) from public;
     grant execute on function ensure_days(date, date) to wakeline_ingest;
+    grant select, insert, update, delete on rate_limit to wakeline_app;
     grant usage on all sequences in schema public to wakeline_app, wakeline_ingest;
   `);
   for (const [table, rights] of Object.entries(APP_WRITES))

@@ -1,0 +1,11 @@
+/// <reference types="astro/client" />
+
+declare namespace App {
+  interface Locals {
+    requestId: string;
+    actor: import('./domain/access/permissions').Actor | null;
+    viewer: import('./server/auth/viewer').Viewer | null;
+    sessionId: string | null;
+    problem?: { status: number; title: string; message: string };
+  }
+}

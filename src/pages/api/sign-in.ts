@@ -1,0 +1,13 @@
+import { signInBody } from '../../schemas/api/account';
+import { paths } from '../../schemas/paths';
+import { returnPath } from '../../server/auth/return-path';
+import { publicEndpoint } from '../../server/http/endpoint';
+import { signIn } from '../../server/services/sign-in';
+
+export const POST = publicEndpoint({ permission: 'public', body: signInBody }, async ({ body, context }) => {
+  const { cookie, role } = await signIn({ ...body, address: context.clientAddress });
+  const home = role === 'customer' ? paths.customerHome() : paths.fleet();
+  return new Response(JSON.stringify({ next: returnPath(body.next, home) }), {
+    headers: { 'content-type': 'application/json', 'set-cookie': cookie },
+  });
+});

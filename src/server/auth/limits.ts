@@ -1,0 +1,47 @@
+import { RateLimiterPostgres, RateLimiterRes } from 'rate-limiter-flexible';
+import { signInPool } from '../db/pools';
+import { AppError } from '../errors';
+
+const limiter = (keyPrefix: string, points: number, duration: number) =>
+  new RateLimiterPostgres({
+    storeClient: signInPool(),
+    tableName: 'rate_limit',
+    tableCreated: true,
+    keyPrefix,
+    points,
+    duration,
+    clearExpiredByTimeout: false,
+  });
+
+interface Limits {
+  account: RateLimiterPostgres;
+  address: RateLimiterPostgres;
+}
+let limits: Limits | undefined;
+/** Wrong passwords: 10 for one account and 50 from one address in 15 minutes. */
+const signInLimits = (): Limits =>
+  (limits ??= { account: limiter('account', 10, 900), address: limiter('address', 50, 900) });
+
+async function take(from: RateLimiterPostgres, key: string): Promise<void> {
+  try {
+    await from.consume(key.slice(0, 200));
+  } catch (blocked) {
+    if (!(blocked instanceof RateLimiterRes)) throw blocked;
+    const seconds = Math.max(1, Math.ceil(blocked.msBeforeNext / 1000));
+    throw new AppError('too_many', {
+      message: `Too many tries to sign in. Wait ${seconds > 90 ? `${Math.ceil(seconds / 60)} minutes` : `${seconds} seconds`}, then try again.`,
+      retryAfterS: seconds,
+    });
+  }
+}
+
+/** Counts a try; throws `too_many` with the wait when there were too many, whether the account exists or not. */
+export async function takeSignInTry(email: string, address: string): Promise<void> {
+  await take(signInLimits().address, address);
+  await take(signInLimits().account, email.trim().toLowerCase());
+}
+
+/** A right password clears the account's count; the address's count stays. */
+export async function forgiveAccount(email: string): Promise<void> {
+  await signInLimits().account.delete(email.trim().toLowerCase());
+}

@@ -1,0 +1,127 @@
+import { createHash } from 'node:crypto';
+import { NodePostgresAdapter } from '@lucia-auth/adapter-postgresql';
+import { Lucia, TimeSpan, type Adapter, type DatabaseSession, type Session, type User } from 'lucia';
+import type { Actor, Role } from '../../domain/access/permissions';
+import { config } from '../config';
+import { signInPool } from '../db/pools';
+import { personOfSession } from '../queries/people';
+import { initialsOf, type Theme, type Viewer } from './viewer';
+
+interface PersonAttributes {
+  active: boolean;
+}
+declare module 'lucia' {
+  interface Register {
+    Lucia: Lucia<Record<never, never>, { active: boolean }>;
+    DatabaseUserAttributes: PersonAttributes;
+    UserId: number;
+  }
+}
+
+const hashed = (sessionId: string) => createHash('sha256').update(sessionId).digest('hex');
+
+/** Keeps only a hash of each session's id: whoever reads the table cannot sign in with it. */
+function hashingAdapter(): Adapter {
+  const inner = new NodePostgresAdapter(signInPool(), { user: 'person', session: 'session' });
+  return {
+    getSessionAndUser: async (id) => {
+      const [session, user] = await inner.getSessionAndUser(hashed(id));
+      return [session && { ...session, id }, user];
+    },
+    getUserSessions: (userId) => inner.getUserSessions(userId),
+    setSession: (session: DatabaseSession) => inner.setSession({ ...session, id: hashed(session.id) }),
+    updateSessionExpiration: (id, expiresAt) => inner.updateSessionExpiration(hashed(id), expiresAt),
+    deleteSession: (id) => inner.deleteSession(hashed(id)),
+    deleteUserSessions: (userId) => inner.deleteUserSessions(userId),
+    deleteExpiredSessions: () => inner.deleteExpiredSessions(),
+  };
+}
+
+/** "Keep me signed in" lasts 30 days of absence; without it the browser's session, 12 hours at most. */
+function make(kept: boolean) {
+  return new Lucia(hashingAdapter(), {
+    sessionExpiresIn: kept ? new TimeSpan(30, 'd') : new TimeSpan(12, 'h'),
+    sessionCookie: {
+      name: kept ? 'wakeline_kept' : 'wakeline_session',
+      expires: kept,
+      attributes: { secure: config().COOKIE_SECURE, sameSite: 'lax', path: '/' },
+    },
+    getUserAttributes: (person) => ({ active: person.active }),
+  });
+}
+let both: { kept: Lucia; brief: Lucia } | undefined;
+const lucias = () => {
+  const made = (both ??= { kept: make(true) as Lucia, brief: make(false) as Lucia });
+  return [made.kept, made.brief] as const;
+};
+
+export interface SignedIn {
+  actor: Actor;
+  viewer: Viewer;
+  sessionId: string;
+  /** Cookies to send back: a session that was renewed, or blanks for one that has ended. */
+  cookies: string[];
+}
+
+async function validated(lucia: Lucia, sessionId: string): Promise<{ session: Session; user: User } | null> {
+  const { session, user } = await lucia.validateSession(sessionId);
+  if (!session || !user.active) return null;
+  return { session, user };
+}
+
+/** Who a Cookie header stands for; null when nobody, or somebody who has been deactivated. */
+export async function signedInBy(cookieHeader: string): Promise<SignedIn | { cookies: string[] }> {
+  const blanks: string[] = [];
+  for (const lucia of lucias()) {
+    const sessionId = lucia.readSessionCookie(cookieHeader);
+    if (!sessionId) continue;
+    const found = await validated(lucia, sessionId);
+    const person = found && (await personOfSession(found.user.id));
+    if (!found || !person) {
+      blanks.push(lucia.createBlankSessionCookie().serialize());
+      continue;
+    }
+    const renewed = found.session.fresh ? [lucia.createSessionCookie(sessionId).serialize()] : [];
+    return {
+      sessionId,
+      cookies: [...blanks, ...renewed],
+      actor: {
+        personId: person.id,
+        organisationId: person.organisationId,
+        role: person.role as Role,
+        sites: person.role === 'customer' ? person.sites : 'all',
+      },
+      viewer: {
+        name: person.name,
+        initials: initialsOf(person.name),
+        email: person.email,
+        role: person.role as Role,
+        organisationName: person.organisationName,
+        theme: person.theme as Theme,
+      },
+    };
+  }
+  return { cookies: blanks };
+}
+
+/** The actor behind an upgrade request's Cookie header. */
+export async function actorOfCookie(
+  cookieHeader: string | undefined,
+): Promise<{ actor: Actor; sessionId: string } | null> {
+  const found = await signedInBy(cookieHeader ?? '');
+  return 'actor' in found ? { actor: found.actor, sessionId: found.sessionId } : null;
+}
+
+/** A new session for a person; returns the cookie to set. */
+export async function openSession(personId: number, kept: boolean): Promise<string> {
+  const lucia = lucias()[kept ? 0 : 1];
+  const session = await lucia.createSession(personId, {});
+  return lucia.createSessionCookie(session.id).serialize();
+}
+
+/** Ends a session and returns the blank cookies that clear it in the browser. */
+export async function endSession(sessionId: string | null): Promise<string[]> {
+  const [kept, brief] = lucias();
+  if (sessionId) await kept.invalidateSession(sessionId);
+  return [kept, brief].map((l) => l.createBlankSessionCookie().serialize());
+}

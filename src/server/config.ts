@@ -1,0 +1,56 @@
+import { z } from 'zod';
+
+/** The environment, read once, every fault of it named at once, then frozen. `.env.example` explains each. */
+
+const port = z.coerce.number().int().min(1).max(65_535);
+const flag = z
+  .enum(['0', '1'])
+  .default('0')
+  .transform((v) => v === '1');
+const postgres = z.string().regex(/^postgres(ql)?:\/\//, 'must be a postgres:// address');
+const ROLES = ['web', 'ingest', 'worker'] as const;
+export type ProcessRole = (typeof ROLES)[number];
+
+const schema = z.object({
+  /** Owner of the database: migrates, and installs the job library's tables. */
+  DATABASE_URL: postgres,
+  /** The web's account, without a way past row-level security. Unset: DATABASE_URL with `set role wakeline_app`. */
+  DATABASE_URL_APP: postgres.optional(),
+  /** The account that writes telemetry. Unset: DATABASE_URL with `set role wakeline_ingest`. */
+  DATABASE_URL_INGEST: postgres.optional(),
+  /** 1: the account may not create roles, so all run as one (shown on the status page). */
+  DATABASE_ONE_ROLE: flag,
+  HOST: z.string().default('127.0.0.1'),
+  PORT: port.default(4321),
+  /** What this process does, separated by commas. */
+  WAKELINE_ROLES: z
+    .string()
+    .default(ROLES.join(','))
+    .transform((s) => s.split(',').map((r) => r.trim()))
+    .pipe(z.array(z.enum(ROLES)).min(1)),
+  /** 1: cookies only over HTTPS. Set it wherever the site is served by HTTPS. */
+  COOKIE_SECURE: flag,
+  /** 1: a reverse proxy stands in front and its x-forwarded-* headers are true. */
+  TRUST_PROXY: flag,
+  LOG_LEVEL: z.enum(['silent', 'error', 'warn', 'info', 'debug']).default('info'),
+  /** The plant's switches, where a simulator runs beside the demo; only named on the demo's pages. */
+  SIMULATOR_URL: z.url().optional(),
+  /** Seconds after a unit's first report of the day before shutdown without a command counts as stuck. */
+  STUCK_GRACE_S: z.coerce.number().int().min(0).max(3600).default(120),
+});
+
+export type Config = Readonly<z.infer<typeof schema>>;
+
+/** @throws Error that lists every fault, one a line */
+export function parseConfig(env: Record<string, string | undefined>): Config {
+  const given = Object.fromEntries(Object.entries(env).filter(([, v]) => v !== undefined && v !== ''));
+  const parsed = schema.safeParse(given);
+  if (parsed.success) return Object.freeze(parsed.data);
+  const faults = parsed.error.issues.map((i) => `  ${i.path.join('.')}: ${i.message}`);
+  throw new Error(
+    `The environment has ${faults.length === 1 ? 'a fault' : `${faults.length} faults`}:\n${faults.join('\n')}`,
+  );
+}
+
+let parsed: Config | undefined;
+export const config = (): Config => (parsed ??= parseConfig(process.env));

@@ -1,0 +1,29 @@
+import type { Knex } from 'knex';
+import type { Actor } from '../../domain/access/permissions';
+import { database } from './pools';
+
+export type Tx = Knex.Transaction;
+
+/** Runs `work` as the actor: row-level security sees the organisation and the sites for this transaction only. */
+export function asActor<T>(
+  actor: Pick<Actor, 'organisationId' | 'sites'>,
+  work: (tx: Tx) => Promise<T>,
+): Promise<T> {
+  return database('web').transaction(async (tx) => {
+    await tx.raw(
+      `select set_config('wakeline.organisation', ?, true), set_config('wakeline.sites', ?, true)`,
+      [String(actor.organisationId), actor.sites === 'all' ? '*' : actor.sites.join(',')],
+    );
+    return work(tx);
+  });
+}
+
+/** Runs `work` for ingest, judgement and jobs, which serve every organisation. */
+export function asIngest<T>(work: (tx: Tx) => Promise<T>): Promise<T> {
+  return database('ingest').transaction(work);
+}
+
+/** Runs `work` on the connections that may look up a person before anybody is signed in. */
+export function asSignIn<T>(work: (tx: Tx) => Promise<T>): Promise<T> {
+  return database('sign_in').transaction(work);
+}

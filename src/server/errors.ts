@@ -1,0 +1,61 @@
+/** What can go wrong in a use case, and the one table of what each kind means outside. */
+
+export const ERROR_KINDS = {
+  invalid: { status: 422, close: 4422, title: 'Something in the request is wrong' },
+  unauthenticated: { status: 401, close: 4401, title: 'Sign in first' },
+  forbidden: { status: 403, close: 4403, title: 'Your role does not include this' },
+  not_found: { status: 404, close: 4404, title: 'Nothing is here' },
+  conflict: { status: 409, close: 4409, title: 'This clashes with what is there' },
+  too_large: { status: 413, close: 1009, title: 'Too large' },
+  too_many: { status: 429, close: 4429, title: 'Too many tries' },
+  unavailable: { status: 503, close: 1013, title: 'Not reachable just now' },
+} as const;
+export type ErrorKind = keyof typeof ERROR_KINDS;
+
+export interface FieldFault {
+  field: string;
+  message: string;
+}
+
+export interface ErrorDetail {
+  /** What was wrong, where, what to do. */
+  message?: string;
+  fields?: FieldFault[];
+  /** Seconds until another try makes sense. */
+  retryAfterS?: number;
+}
+
+export class AppError extends Error {
+  constructor(
+    readonly kind: ErrorKind,
+    readonly detail: ErrorDetail = {},
+  ) {
+    super(detail.message ?? ERROR_KINDS[kind].title);
+    this.name = 'AppError';
+  }
+}
+
+/** PostgreSQL out of reach, shutting down or out of connections: worth a later try, and no fault of the request. */
+const AWAY = new Set([
+  'ECONNREFUSED',
+  'ECONNRESET',
+  'EPIPE',
+  'ETIMEDOUT',
+  '57P01',
+  '57P02',
+  '57P03',
+  '53300',
+  '08006',
+  '08001',
+  '08003',
+]);
+export function isDatabaseAway(error: unknown): boolean {
+  if (!(error instanceof Error)) return false;
+  const code = (error as { code?: unknown }).code;
+  return (
+    (typeof code === 'string' && AWAY.has(code)) ||
+    /Connection terminated|Timeout acquiring a connection|timeout exceeded when trying to connect/.test(
+      error.message,
+    )
+  );
+}

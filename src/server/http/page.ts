@@ -1,0 +1,51 @@
+import type { AstroGlobal } from 'astro';
+import { mayUse, type Actor, type Permission } from '../../domain/access/permissions';
+import { paths } from '../../schemas/paths';
+import type { Viewer } from '../auth/viewer';
+import { asActor, type Tx } from '../db/transaction';
+import { AppError, ERROR_KINDS } from '../errors';
+import { log } from '../log';
+import { explain } from './problem';
+
+export interface Loaded<T> {
+  actor: Actor;
+  viewer: Viewer;
+  data: T;
+}
+
+/**
+ * The one wrapper of pages: `const loaded = await page(Astro, 'fleet.read', async ({ tx }) => …);
+ * if (loaded instanceof Response) return loaded;`. Signed out goes to sign-in and comes back.
+ */
+export async function page<T>(
+  astro: AstroGlobal,
+  permission: Permission,
+  load: (call: { actor: Actor; tx: Tx }) => Promise<T>,
+): Promise<Loaded<T> | Response> {
+  const { actor, viewer } = astro.locals;
+  if (!actor || !viewer) return astro.redirect(paths.signIn(astro.url.pathname + astro.url.search), 303);
+  try {
+    if (!mayUse(actor.role, permission))
+      throw new AppError('forbidden', { message: 'This page is for the people who look after sites.' });
+    return { actor, viewer, data: await asActor(actor, (tx) => load({ actor, tx })) };
+  } catch (error) {
+    return problemPage(astro, error);
+  }
+}
+
+/** Pages that must work before anybody is signed in declare it with this. */
+export function publicPage(astro: AstroGlobal): { viewer: Viewer | null } {
+  return { viewer: astro.locals.viewer };
+}
+
+function problemPage(astro: AstroGlobal, error: unknown): Promise<Response> {
+  const known = explain(error);
+  if (!known || ERROR_KINDS[known.kind].status > 499)
+    log.error({ requestId: astro.locals.requestId, error }, 'a page failed');
+  astro.locals.problem = {
+    status: known ? ERROR_KINDS[known.kind].status : 500,
+    title: known ? ERROR_KINDS[known.kind].title : 'Something failed on our side',
+    message: known?.message ?? `Try again; if it stays, report it with the number ${astro.locals.requestId}.`,
+  };
+  return astro.rewrite('/problem');
+}

@@ -1,0 +1,11 @@
+import pino from 'pino';
+
+const level = process.env.LOG_LEVEL ?? (process.env.VITEST ? 'silent' : 'info');
+export const log = pino({
+  level,
+  base: undefined,
+  redact: {
+    paths: ['password', '*.password', 'token', '*.token', 'headers.cookie', 'headers.authorization'],
+    censor: '…',
+  },
+});
