@@ -228,6 +228,7 @@ export async function up(knex: Knex): Promise<void> {
     create index string_input on string (input_id);
     create index string_plane on string (plane_id);
     create index string_zone on string (zone_id);
+    create index string_name_search on string (upper(name) text_pattern_ops);
 
     create table transmitter_string (
       transmitter_id int4 not null,

@@ -98,6 +98,8 @@ export async function up(knex: Knex): Promise<void> {
     );
     create index event_cursor on event (xid, id);
     create index event_site on event (site_id, at desc);
+    create index event_superseded on event (supersedes) where supersedes is not null;
+    create index event_acknowledged on event ((detail ->> 'key')) where kind = 'hazard_acknowledged';
     create index event_string on event (string_id, at desc) where string_id is not null;
 
     create table shutdown_test (

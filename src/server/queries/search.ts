@@ -1,0 +1,59 @@
+import type { Tx } from '../db/transaction';
+import { VISIBLE_SITE } from './visible';
+
+export interface SearchRow {
+  kind: 'site' | 'string' | 'unit';
+  siteRef: string;
+  siteName: string;
+  place: string;
+  stringRef: string | null;
+  stringName: string | null;
+  serial: string | null;
+  position: number | null;
+}
+
+/** A prefix for `like`, with what `like` would read as a pattern made plain. */
+export const likePrefix = (text: string): string => `${text.replace(/[\\%_]/g, '\\$&')}%`;
+
+/**
+ * Sites by the beginning of any word of their name or place, strings by the beginning of theirs ("B3", or
+ * "Kestrel B3" within a site), units by the beginning of their serial. Serials and string names go by index.
+ */
+export async function search(tx: Tx, text: string, limit: number): Promise<SearchRow[]> {
+  const words = text.split(/\s+/).filter(Boolean);
+  const last = words.at(-1) ?? '';
+  const withSite = words.slice(0, -1).join(' ');
+  const { rows } = await tx.raw<{ rows: SearchRow[] }>(
+    `(select 'site' as kind, site.ref as "siteRef", site.name as "siteName", site.place, null::uuid as "stringRef",
+             null as "stringName", null as serial, null::int as position
+      from site
+      where ${VISIBLE_SITE}
+        and (lower(site.name) like lower(:whole) or lower(site.name) like '% ' || lower(:whole)
+             or lower(site.place) like lower(:whole) or lower(site.place) like '% ' || lower(:whole))
+      order by lower(site.name) not like lower(:whole), site.name limit :limit)
+     union all
+     (select 'string', site.ref, site.name, site.place, s.ref, s.name, null, null
+      from string s join site on site.id = s.site_id
+      where ${VISIBLE_SITE} and upper(s.name) like upper(:last)
+        and (:withSite = '' or lower(site.name) like lower(:site) or lower(site.name) like '% ' || lower(:site))
+      order by length(s.name), s.name, site.name limit :limit)
+     union all
+     (select 'unit', site.ref, site.name, site.place, s.ref, s.name, u.serial, slot.position
+      from unit u
+      join placement p on p.unit_id = u.id and p.placed_to is null
+      join slot on slot.id = p.slot_id
+      join string s on s.id = slot.string_id
+      join site on site.id = s.site_id
+      where u.organisation_id = (select actor_organisation()) and u.serial like :serial and ${VISIBLE_SITE}
+      order by u.serial limit :limit)`,
+    {
+      whole: likePrefix(words.join(' ')),
+      last: likePrefix(last),
+      withSite,
+      site: likePrefix(withSite),
+      serial: likePrefix(text.toUpperCase()),
+      limit,
+    },
+  );
+  return rows;
+}
