@@ -1,14 +1,14 @@
 import type { EventKind } from '../../domain/verdicts/codes';
 import type { Acknowledgement, MissedItem, SiteContact } from '../../schemas/api/fleet';
 import type { Tx } from '../db/transaction';
-import { VISIBLE_SITE } from './visible';
+import { SITE_VISIBLE } from './visible-site';
 
 /** Whom to call at each site (every visible one, or those of the given numbers). */
 export async function contactsOf(tx: Tx, siteIds?: readonly number[]): Promise<SiteContact[]> {
   const { rows } = await tx.raw<{ rows: SiteContact[] }>(
     `select site.ref as "siteId", site.contact_name as name, site.contact_phone as phone,
             site.shutdown_switch_place as "shutdownSwitchPlace"
-     from site where ${VISIBLE_SITE} ${siteIds ? 'and site.id = any (:siteIds)' : ''}
+     from site where ${SITE_VISIBLE} ${siteIds ? 'and site.id = any (:siteIds)' : ''}
      order by site.name`,
     siteIds ? { siteIds: [...siteIds] } : {},
   );
@@ -22,7 +22,7 @@ export async function acknowledgementsOf(tx: Tx, keys: readonly string[]): Promi
     `select distinct on (e.detail ->> 'key') e.detail ->> 'key' as key, site.ref as "siteId", e.at,
             e.detail ->> 'person' as person
      from event e join site on site.id = e.site_id
-     where e.kind = 'hazard_acknowledged' and e.detail ->> 'key' = any (:keys) and ${VISIBLE_SITE}
+     where e.kind = 'hazard_acknowledged' and e.detail ->> 'key' = any (:keys) and ${SITE_VISIBLE}
      order by e.detail ->> 'key', e.at desc`,
     { keys: [...keys] },
   );
@@ -36,7 +36,7 @@ export async function addAcknowledgement(
   await tx.raw(
     `insert into event (at, organisation_id, site_id, kind, detail)
      select :at, site.organisation_id, site.id, 'hazard_acknowledged', :detail::jsonb
-     from site where site.id = :siteId and ${VISIBLE_SITE}`,
+     from site where site.id = :siteId and ${SITE_VISIBLE}`,
     {
       at: entry.at,
       siteId: entry.siteId,
@@ -100,7 +100,7 @@ export async function missedSince(
                               then jsonb_array_length(e.detail -> 'positions') end), 0)::int as units,
             max(e.at) as "newestAt", (count(*) over ())::int as total
      from event e join site on site.id = e.site_id
-     where ${VISIBLE_SITE} and e.recorded_at > :since
+     where ${SITE_VISIBLE} and e.recorded_at > :since
        and e.at > greatest(:since::timestamptz - make_interval(days => ${NEWS_DAYS}), now() - make_interval(days => 400))
        and e.kind = any (:kinds)
      group by site.id, e.kind

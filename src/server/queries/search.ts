@@ -1,5 +1,5 @@
 import type { Tx } from '../db/transaction';
-import { VISIBLE_SITE } from './visible';
+import { SITE_VISIBLE } from './visible-site';
 
 export interface SearchRow {
   kind: 'site' | 'string' | 'unit';
@@ -27,14 +27,14 @@ export async function search(tx: Tx, text: string, limit: number): Promise<Searc
     `(select 'site' as kind, site.ref as "siteRef", site.name as "siteName", site.place, null::uuid as "stringRef",
              null as "stringName", null as serial, null::int as position
       from site
-      where ${VISIBLE_SITE}
+      where ${SITE_VISIBLE}
         and (lower(site.name) like lower(:whole) or lower(site.name) like '% ' || lower(:whole)
              or lower(site.place) like lower(:whole) or lower(site.place) like '% ' || lower(:whole))
       order by lower(site.name) not like lower(:whole), site.name limit :limit)
      union all
      (select 'string', site.ref, site.name, site.place, s.ref, s.name, null, null
       from string s join site on site.id = s.site_id
-      where ${VISIBLE_SITE} and upper(s.name) like upper(:last)
+      where ${SITE_VISIBLE} and upper(s.name) like upper(:last)
         and (:withSite = '' or lower(site.name) like lower(:site) or lower(site.name) like '% ' || lower(:site))
       order by length(s.name), s.name, site.name limit :limit)
      union all
@@ -44,7 +44,7 @@ export async function search(tx: Tx, text: string, limit: number): Promise<Searc
       join slot on slot.id = p.slot_id
       join string s on s.id = slot.string_id
       join site on site.id = s.site_id
-      where u.organisation_id = (select actor_organisation()) and u.serial like :serial and ${VISIBLE_SITE}
+      where u.organisation_id = (select actor_organisation()) and u.serial like :serial and ${SITE_VISIBLE}
       order by u.serial limit :limit)`,
     {
       whole: likePrefix(words.join(' ')),

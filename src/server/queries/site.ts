@@ -2,7 +2,7 @@ import type { EventKind, InForce } from '../../domain/verdicts/codes';
 import type { SitePage, LoggerNow, ZoneNow } from '../../schemas/api/site';
 import type { CommandNow, EventItem } from '../../schemas/api/now';
 import type { Tx } from '../db/transaction';
-import { VISIBLE_SITE } from './visible';
+import { SITE_VISIBLE } from './visible-site';
 
 const iso = (at: Date | null): string | null => at?.toISOString() ?? null;
 
@@ -39,7 +39,7 @@ export async function siteFacts(tx: Tx, ref: string): Promise<SiteFacts | undefi
      left join lateral (
        select at, result, made_by from shutdown_test
        where site_id = site.id and superseded_by is null order by at desc limit 1) t on true
-     where site.ref = :ref and ${VISIBLE_SITE}`,
+     where site.ref = :ref and ${SITE_VISIBLE}`,
     { ref },
   );
   const row = rows[0];
@@ -131,7 +131,7 @@ export async function eventsOfSite(
             string.ref as "stringId", string.name as "stringName", e.kind, e.detail,
             (extract(epoch from e.at) * 1000000)::int8 as micros
      from event e join site on site.id = e.site_id left join string on string.id = e.string_id
-     where e.site_id = :siteId and ${VISIBLE_SITE}
+     where e.site_id = :siteId and ${SITE_VISIBLE}
        and not exists (select from event newer where newer.supersedes = e.id)
        ${wanted.kind ? 'and e.kind = :kind' : ''}
        ${wanted.before ? `and (e.at, e.id) < (timestamptz 'epoch' + :micros::int8 * interval '1 microsecond', :number::int8)` : ''}
