@@ -1,11 +1,12 @@
 import { paths } from '../../schemas/paths';
-import { searchQuery, type SearchHit, type SearchReply } from '../../schemas/api/search';
+import { searchQuery, type SearchReply } from '../../schemas/api/search';
 import { endpoint } from '../../server/http/endpoint';
 import { search, type SearchRow } from '../../server/queries/search';
 
-const PER_KIND = 6;
+const PER_KIND = 4;
+type Result = SearchReply['results'][number];
 
-function hit(row: SearchRow): SearchHit {
+function hit(row: SearchRow): Result {
   if (row.kind === 'site' || !row.stringRef)
     return { kind: 'site', label: row.siteName, where: row.place, href: paths.site(row.siteRef) };
   const href = paths.string(row.siteRef, row.stringRef);
