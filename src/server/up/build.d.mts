@@ -1,0 +1,2 @@
+export function sourcesHash(): string;
+export function buildIfStale(): Promise<void>;

@@ -1,0 +1,2 @@
+export function startGuard(): void;
+export function dismissGuard(): void;

@@ -1,0 +1,1 @@
+export function homeOf(kind?: 'demo' | 'test' | 'bench'): string;

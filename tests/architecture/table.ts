@@ -1,0 +1,180 @@
+/** Who may import whom. A folder that is not in here fails the test: name it, and say what it may lean on. */
+export interface Row {
+  /** Path prefix; the longest that fits a file is its folder. */
+  folder: string;
+  /** Folders of ours that it may import besides itself. */
+  may: readonly string[];
+  /** Packages: a list, or every one (`any`), or every one that runs in a browser (`browser`). */
+  packages: readonly string[] | 'any' | 'browser';
+  /** Subfolders that may exist; undefined: any. */
+  subfolders?: readonly string[];
+}
+
+const EVERYTHING = [
+  'src/components',
+  'src/drawings',
+  'src/features',
+  'src/layouts',
+  'src/lib',
+  'src/pages',
+  'src/schemas',
+  'src/server',
+  'src/styles',
+  'src/domain',
+  'src/env.d.ts',
+] as const;
+/** What routes may use: all of src but the database itself. */
+const ROUTED = [
+  'src/components',
+  'src/drawings',
+  'src/features',
+  'src/layouts',
+  'src/lib',
+  'src/schemas',
+  'src/server',
+  'src/server/queries',
+  'src/styles',
+  'src/domain',
+];
+const FEATURE = ['src/components', 'src/drawings', 'src/lib', 'src/schemas', 'src/domain'];
+export const FEATURES = [
+  'fleet',
+  'site',
+  'strings',
+  'commissioning',
+  'shutdown',
+  'cases',
+  'equipment',
+  'people',
+  'customer',
+] as const;
+
+export const TABLE: readonly Row[] = [
+  {
+    folder: 'src/domain',
+    may: [],
+    packages: [], // the allow-list: reference-grade, pure packages only
+    subfolders: [
+      'photovoltaics',
+      'readings',
+      'verdicts',
+      'causes',
+      'output',
+      'commissioning',
+      'access',
+      'equipment',
+    ],
+  },
+  { folder: 'src/schemas', may: ['src/domain'], packages: ['zod'], subfolders: ['api'] },
+  { folder: 'src/lib', may: ['src/schemas', 'src/domain'], packages: 'browser', subfolders: [] },
+  { folder: 'src/drawings', may: ['src/domain'], packages: [], subfolders: [] },
+  {
+    folder: 'src/components',
+    may: ['src/drawings', 'src/lib', 'src/schemas', 'src/domain'],
+    packages: 'browser',
+    subfolders: ['ui', 'charts', 'shell', 'states'],
+  },
+  { folder: 'src/features', may: [], packages: [], subfolders: FEATURES },
+  ...FEATURES.map((name): Row => ({ folder: `src/features/${name}`, may: FEATURE, packages: 'browser' })),
+  {
+    folder: 'src/server/db',
+    may: ['src/server/queries', 'src/server/config.ts', 'src/server/log.ts', 'src/schemas', 'src/domain'],
+    packages: ['pg', 'knex', 'pg-copy-streams'],
+    subfolders: [],
+  },
+  {
+    folder: 'src/server/queries',
+    may: ['src/server/db', 'src/server/config.ts', 'src/schemas', 'src/domain'],
+    packages: ['pg', 'knex', 'pg-copy-streams'],
+    subfolders: [],
+  },
+  {
+    folder: 'src/server',
+    may: ['src/server/db', 'src/server/queries', 'src/drawings', 'src/schemas', 'src/domain'],
+    packages: 'any',
+    subfolders: [
+      'db',
+      'queries',
+      'services',
+      'auth',
+      'http',
+      'ingest',
+      'live',
+      'jobs',
+      'mail',
+      'files',
+      'reports',
+      'cli',
+      'up',
+    ],
+  },
+  { folder: 'src/pages', may: ROUTED, packages: ['astro', 'zod', 'node:'] },
+  { folder: 'src/layouts', may: ROUTED, packages: ['astro'], subfolders: [] },
+  { folder: 'src/middleware.ts', may: ROUTED, packages: ['astro', 'node:'] },
+  { folder: 'src/env.d.ts', may: EVERYTHING, packages: 'any' },
+  { folder: 'src/styles', may: [], packages: 'browser', subfolders: [] },
+  { folder: 'simulator', may: ['src/domain', 'src/schemas'], packages: 'any' },
+  {
+    folder: 'seeds',
+    may: ['simulator', 'src/domain', 'src/server', 'src/server/db', 'src/server/queries'],
+    packages: 'any',
+  },
+  { folder: 'migrations', may: [], packages: ['knex'], subfolders: [] },
+  {
+    folder: 'tests',
+    may: [
+      ...EVERYTHING,
+      'src/server/db',
+      'src/server/queries',
+      'src/middleware.ts',
+      'simulator',
+      'seeds',
+      'migrations',
+    ],
+    packages: 'any',
+    subfolders: [
+      'setup',
+      'support',
+      'reference',
+      'integration',
+      'access',
+      'migrations',
+      'architecture',
+      'e2e',
+      'bench',
+    ],
+  },
+];
+
+/** Packages that have no place in a browser. */
+export const SERVER_PACKAGES = [
+  'pg',
+  'knex',
+  'pino',
+  'ws',
+  'sirv',
+  'lucia',
+  '@lucia-auth/adapter-postgresql',
+  '@node-rs/argon2',
+  'graphile-worker',
+  'nodemailer',
+  'smtp-server',
+  'pdfkit',
+  'sharp',
+  'pg-copy-streams',
+  'rate-limiter-flexible',
+];
+
+/** The row of a file: the one with the longest prefix. */
+export function rowOf(file: string): Row | undefined {
+  return TABLE.filter((row) => file === row.folder || file.startsWith(`${row.folder}/`)).sort(
+    (a, b) => b.folder.length - a.folder.length,
+  )[0];
+}
+
+/** `@scope/name/deep` → `@scope/name`; `node:fs` and `astro:middleware` → `node:`, `astro`. */
+export function packageOf(specifier: string): string {
+  if (specifier.startsWith('node:')) return 'node:';
+  if (specifier.startsWith('astro:')) return 'astro';
+  return specifier.split('/', specifier.startsWith('@') ? 2 : 1).join('/');
+}
