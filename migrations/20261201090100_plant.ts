@@ -242,8 +242,9 @@ export async function up(knex: Knex): Promise<void> {
 
     -- a shutdown-only string names its transmitters: checked when the transaction ends
     create function shutdown_only_names_transmitters() returns trigger language plpgsql as $f$
-    declare checked int4 := case when tg_table_name = 'string' then new.id else old.string_id end;
+    declare checked int4;
     begin
+      if tg_table_name = 'string' then checked := new.id; else checked := old.string_id; end if;
       if exists (select from string where id = checked and kind = 'shutdown_only')
          and not exists (select from transmitter_string where string_id = checked) then
         raise exception 'string % is shutdown-only and names no transmitter', checked
