@@ -1,0 +1,34 @@
+import type { CauseNow } from '../../schemas/api/now';
+
+/** Gravest first: the order of every list of causes. */
+export const GRAVITY: readonly CauseNow['verdict'][] = [
+  'not_shutting_down',
+  'stuck',
+  'unconfirmed',
+  'silent',
+];
+
+/** Gravest first, then oldest first. */
+export function byGravity(a: CauseNow, b: CauseNow): number {
+  return GRAVITY.indexOf(a.verdict) - GRAVITY.indexOf(b.verdict) || a.since.localeCompare(b.since);
+}
+
+/** A cause after which somebody could touch what is live, believing that it is not. */
+export const isHazard = (cause: Pick<CauseNow, 'verdict'>): boolean => cause.verdict === 'not_shutting_down';
+
+/** What to treat as live; null where the cause says nothing about live conductors. */
+export function treatAsLive(cause: Pick<CauseNow, 'verdict'>): string | null {
+  if (cause.verdict === 'not_shutting_down')
+    return 'Treat every string there as live until a rated meter at the home run shows otherwise.';
+  if (cause.verdict === 'unconfirmed')
+    return 'Nothing shows that these units followed the command. Treat their strings as live.';
+  if (cause.verdict === 'silent')
+    return "Whether these units follow a shutdown can't be confirmed until they are heard again.";
+  return null;
+}
+
+/** What kind of part, as it stands in a sentence: "transmitter T4". */
+export const partInWords = (part: NonNullable<CauseNow['sharedPart']>): string => {
+  const name = part.name.trim();
+  return name.toLowerCase().startsWith(part.kind) ? name : `${part.kind} ${name}`;
+};

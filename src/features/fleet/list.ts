@@ -1,0 +1,58 @@
+import type { FleetView } from '../../schemas/api/fleet';
+import type { CauseNow, SiteNow } from '../../schemas/api/now';
+import { asksForSomebody, concernedAt, needOf, urgency, type Need } from './need';
+
+export interface FleetLine {
+  site: SiteNow;
+  causes: readonly CauseNow[];
+  need: Need;
+}
+
+const byName = new Intl.Collator('en', { numeric: true, sensitivity: 'base' });
+
+/** Unknown figures come last whichever way one sorts. */
+function byFigure(a: number | null, b: number | null, order: FleetView['order']): number {
+  if (a === null || b === null) return a === b ? 0 : a === null ? 1 : -1;
+  return order === 'down' ? b - a : a - b;
+}
+
+const SORT: Record<FleetView['sort'], (a: FleetLine, b: FleetLine, order: FleetView['order']) => number> = {
+  need: (a, b, order) => {
+    const gap =
+      urgency(a.need) - urgency(b.need) || concernedAt(b.site, b.causes) - concernedAt(a.site, a.causes);
+    return order === 'down' ? gap : -gap;
+  },
+  name: (a, b, order) => byName.compare(a.site.name, b.site.name) * (order === 'down' ? 1 : -1),
+  stage: (a, b, order) => a.site.stage.localeCompare(b.site.stage) * (order === 'down' ? 1 : -1),
+  units: (a, b, order) => byFigure(a.site.counts.units, b.site.counts.units, order),
+  ratio: (a, b, order) => byFigure(a.site.performanceRatio30d, b.site.performanceRatio30d, order),
+  power: (a, b, order) => byFigure(a.site.power, b.site.power, order),
+};
+
+/** The lines of the fleet's table for a view: filtered, searched, sorted; names settle what is equal. */
+export function fleetLines(
+  sites: readonly SiteNow[],
+  causes: readonly CauseNow[],
+  view: FleetView,
+): FleetLine[] {
+  const ofSite = new Map<string, CauseNow[]>();
+  for (const cause of causes) {
+    const list = ofSite.get(cause.siteId);
+    if (list) list.push(cause);
+    else ofSite.set(cause.siteId, [cause]);
+  }
+  const wanted = view.q.toLowerCase();
+  return sites
+    .map((site): FleetLine => {
+      const own = ofSite.get(site.id) ?? [];
+      return { site, causes: own, need: needOf(site, own) };
+    })
+    .filter(
+      ({ site, need }) =>
+        (view.stage === 'any' || site.stage === view.stage) &&
+        (view.show !== 'attention' || asksForSomebody(need)) &&
+        (view.show !== 'shutdown' || site.inShutdownSince !== null || site.commands.length > 0) &&
+        (wanted === '' || `${site.name} ${site.place}`.toLowerCase().includes(wanted)),
+    )
+    .sort((a, b) => SORT[view.sort](a, b, view.order) || byName.compare(a.site.name, b.site.name));
+}
