@@ -59,3 +59,10 @@ export function isDatabaseAway(error: unknown): boolean {
     )
   );
 }
+
+/** What a query found, or `not_found`: the same answer for what is not there and for what is somebody else's. */
+export function found<T>(value: T | null | undefined, what: string): T {
+  if (value === undefined || value === null)
+    throw new AppError('not_found', { message: `No such ${what}. Check the link, or go back to the fleet.` });
+  return value;
+}

@@ -1,0 +1,50 @@
+import { z } from 'zod';
+import { heardItem } from '../live';
+import { commandNow, gatewayNow, id, stringNow } from './now';
+
+/** The roll call of a site: who may have answered, who has, and who runs it. Times ISO 8601 in UTC. */
+
+const time = z.iso.datetime();
+
+export const rollCallRun = z.object({
+  id,
+  startedAt: time,
+  startedBy: z.string(),
+  personOnSite: z.string(),
+  stoppedAt: time.nullable(),
+  stoppedBy: z.string().nullable(),
+});
+export type RollCallRun = z.infer<typeof rollCallRun>;
+
+export const rollCallPage = z.object({
+  at: time, // when this was read
+  site: z.object({
+    id,
+    name: z.string(),
+    place: z.string(),
+    timeZone: z.string(),
+    stage: z.enum(['commissioning', 'operating']),
+  }),
+  run: rollCallRun.nullable(), // the open one, else the last; null: never started
+  /** The as-built, string by string; units of shutdown-only strings cannot answer and are not on the roll. */
+  strings: z.array(stringNow),
+  answers: z.array(heardItem), // oldest first; each serial's first answer at this site
+  gateways: z.array(gatewayNow),
+  loggers: z.array(z.object({ serial: z.string(), connected: z.boolean(), lastSpokeAt: time.nullable() })),
+  commands: z.array(commandNow), // in force other than released: what a unit follows once it is heard
+  /** Names of unit types here that pass full module voltage until they have answered, as entered in the catalogue. */
+  passesUntilHeard: z.array(z.string()),
+});
+export type RollCallPage = z.infer<typeof rollCallPage>;
+
+export const rollCallStart = z.strictObject({
+  personOnSite: z
+    .string({ error: 'Enter the name of the person who is on site.' })
+    .trim()
+    .min(2, 'Enter the name of the person who is on site.')
+    .max(120, 'Use at most 120 characters.'),
+  onSite: z.literal(true, { error: 'Confirm that this person is on site now.' }),
+});
+export type RollCallStart = z.infer<typeof rollCallStart>;
+
+export const siteParams = z.object({ site: id });
