@@ -1,5 +1,6 @@
 import pg from 'pg';
 import { inject } from 'vitest';
+import { closePools } from '../../src/server/db/pools';
 
 export interface TestDatabase {
   name: string;
@@ -9,7 +10,9 @@ export interface TestDatabase {
   appUrl: string;
   /** The account that writes telemetry. */
   ingestUrl: string;
-  /** The environment that the server's configuration reads. */
+  /** Connections of the owner, to set a scene and to look behind the curtain. */
+  owner: pg.Pool;
+  /** The addresses as the server's configuration reads them; already set in this process. */
   env: Record<string, string>;
   /** Drops the database; ends whatever is still connected. */
   drop(): Promise<void>;
@@ -17,7 +20,10 @@ export interface TestDatabase {
 
 let made = 0;
 
-/** A database of its own for a test file: a copy of the migrated, empty template. Drop it in `afterAll`. */
+/**
+ * A database of its own for a test file: a copy of the migrated, empty template. The environment of this process
+ * then names it, so that the server's own `database()` works on it. Drop it in `afterAll`.
+ */
 export async function testDatabase(): Promise<TestDatabase> {
   const server = inject('testServer');
   const name = `${server.template.replace(/_template$/, '')}_${process.pid}_${process.env.VITEST_POOL_ID ?? 0}_${made++}`;
@@ -39,15 +45,22 @@ export async function testDatabase(): Promise<TestDatabase> {
   };
   await admin(`create database "${name}" template "${server.template}"`);
   const urls = { url: at(server.templateUrl), appUrl: at(server.appUrl), ingestUrl: at(server.ingestUrl) };
+  const env = {
+    DATABASE_URL: urls.url,
+    DATABASE_URL_APP: urls.appUrl,
+    DATABASE_URL_INGEST: urls.ingestUrl,
+    DATABASE_ONE_ROLE: server.oneRole ? '1' : '0',
+  };
+  Object.assign(process.env, env);
+  const owner = new pg.Pool({ connectionString: urls.url, max: 4 });
   return {
     name,
     ...urls,
-    env: {
-      DATABASE_URL: urls.url,
-      DATABASE_URL_APP: urls.appUrl,
-      DATABASE_URL_INGEST: urls.ingestUrl,
-      DATABASE_ONE_ROLE: server.oneRole ? '1' : '0',
+    owner,
+    env,
+    drop: async () => {
+      await Promise.all([owner.end(), closePools()]);
+      await admin(`drop database if exists "${name}" with (force)`);
     },
-    drop: () => admin(`drop database if exists "${name}" with (force)`),
   };
 }

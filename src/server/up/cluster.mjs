@@ -118,7 +118,10 @@ async function setPassword(home, bin, state) {
 
 async function stopServer(home) {
   const bin = postgresPrograms(majorOf(dataOf(home)));
-  if (bin) await postgres(bin, 'pg_ctl', ['stop', '-D', dataOf(home), '-m', 'fast', '-w', '-t', '60', '-s']);
+  if (bin)
+    await postgres(bin, 'pg_ctl', ['stop', '-D', dataOf(home), '-m', 'fast', '-w', '-t', '60', '-s'], {
+      evenAtEnd: true,
+    });
 }
 
 const SAFE = ['-c max_wal_size=2GB', '-c shared_buffers=256MB', '-c max_connections=120'];
@@ -213,6 +216,14 @@ async function ensureOwner(state) {
   }
 }
 
+/** The clusters that this process uses, by home. */
+const joined = new Map();
+
+/** Leaves every cluster that this process joined, also one whose start was broken off. */
+export async function leaveAll() {
+  for (const [home, user] of joined) await leaveCluster(home, user);
+}
+
 /**
  * Starts the home's cluster, or joins it where it already runs.
  * @param {string} home @param {{durable?: boolean}} options durable false: for tests, which a power cut may cost
@@ -229,6 +240,7 @@ export async function startCluster(home, { durable = true } = {}) {
       fs.mkdirSync(usersOf(home), { recursive: true });
       fs.writeFileSync(path.join(usersOf(home), user), '');
       tell({ cluster: { home, user } });
+      joined.set(home, user);
       await launchServer(home, kept, durable);
       await ensureOwner(kept);
       writeState(home, kept);
@@ -246,6 +258,7 @@ export async function startCluster(home, { durable = true } = {}) {
 
 /** Gives up one user's share; stops the server when no living process uses it any more. */
 export function leaveCluster(home, user) {
+  joined.delete(home);
   return locked(lockOf(home), async () => {
     fs.rmSync(path.join(usersOf(home), user), { force: true });
     for (const other of fs.existsSync(usersOf(home)) ? fs.readdirSync(usersOf(home)) : []) {

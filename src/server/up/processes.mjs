@@ -90,12 +90,20 @@ export function listenerOf(port) {
 }
 
 const running = new Set();
+let ending = false;
+
+/** From now on only what belongs to the end itself may be started. */
+export function refuseLaunches() {
+  ending = true;
+}
 
 /**
  * Starts a program in a process group of its own, so that Ctrl-C in the terminal reaches only us and we
  * take things down in order; the guard ends it should we be killed.
  */
-export function launch(program, args, options = {}) {
+export function launch(program, args, { evenAtEnd = false, ...options } = {}) {
+  if (ending && !evenAtEnd)
+    throw new Error(`${program} is not started any more: everything is being taken down`);
   const child = spawn(program, args, { stdio: ['ignore', 'pipe', 'pipe'], ...options, detached: true });
   if (child.pid) {
     running.add(child);

@@ -13,7 +13,13 @@ const began = process.hrtime.bigint();
 /** Seconds since this process began to work. */
 export const elapsedS = () => Number(process.hrtime.bigint() - began) / 1e9;
 
+let stream = process.stdout;
+/** Progress to the error stream: where the output is figures for a program to read. */
+export function sayAside() {
+  stream = process.stderr;
+}
+
 /** One line of progress with the seconds since the start. */
 export function say(line) {
-  process.stdout.write(`${elapsedS().toFixed(1).padStart(6)} s  ${line}\n`);
+  stream.write(`${elapsedS().toFixed(1).padStart(6)} s  ${line}\n`);
 }

@@ -1,0 +1,137 @@
+// The adapter's server entry: bundled by the build together with the pages, so that everything that the server
+// needs is in one module graph, once.
+import { createServer, type IncomingMessage, type Server, type ServerResponse } from 'node:http';
+import { createExports as nodeExports } from '@astrojs/node/server.js';
+import type { SSRManifest } from 'astro';
+import sirv from 'sirv';
+import { config } from './config';
+import { ERROR_KINDS } from './errors';
+import { log } from './log';
+import { refuseUpgrade, routeUpgrade, startRoles, stopRoles } from './roles';
+
+type Handler = (req: IncomingMessage, res: ServerResponse) => Promise<void>;
+
+export interface StartOptions {
+  /** The folder `dist/client`. The one baked into the build would be wrong after the build was moved. */
+  client: string;
+  port?: number;
+  host?: string;
+}
+export interface Running {
+  server: Server;
+  /** Ends in order: no new requests, loggers, browsers, jobs, database. */
+  stop(): Promise<void>;
+}
+
+/** No endpoint reads more; what reads less says so itself (http/body.ts). */
+const REQUEST_MAX_BYTES = 1024 * 1024;
+
+/** An answer without Astro: a problem document for the API, a line of text for a browser. */
+function answer(req: IncomingMessage, res: ServerResponse, status: number, message: string): void {
+  const api = req.url?.startsWith('/api/');
+  res.writeHead(status, {
+    'content-type': api ? 'application/problem+json' : 'text/plain; charset=utf-8',
+    'cache-control': 'no-store',
+    connection: 'close',
+  });
+  res.end(api ? JSON.stringify({ type: 'about:blank', title: message, status, fields: [] }) : `${message}\n`);
+}
+
+/** What is refused before Astro sees it: it would answer these with a fault of its own. */
+function refuseEarly(req: IncomingMessage, res: ServerResponse): boolean {
+  const { host } = req.headers;
+  if (!req.url?.startsWith('/') || !host || !URL.canParse(req.url, `http://${host}`)) {
+    answer(req, res, 400, 'The address is not readable.');
+    return true;
+  }
+  try {
+    decodeURI(req.url);
+  } catch {
+    answer(req, res, 400, 'The address has a % that encodes nothing.');
+    return true;
+  }
+  if (Number(req.headers['content-length'] ?? 0) > REQUEST_MAX_BYTES) {
+    answer(
+      req,
+      res,
+      ERROR_KINDS.too_large.status,
+      `A body may have at most ${REQUEST_MAX_BYTES} bytes. Send less at once.`,
+    );
+    return true;
+  }
+  return false;
+}
+
+function dropForwarded(req: IncomingMessage): void {
+  for (const name of Object.keys(req.headers))
+    if (name.startsWith('x-forwarded-') || name === 'forwarded') delete req.headers[name];
+}
+
+/** A rejection that nobody handles leaves the process in a state nobody thought of: say so and end. */
+function endOnUnhandled(): void {
+  const end = (error: unknown): void => {
+    log.fatal({ error }, 'an unhandled failure: the process ends');
+    process.exit(70);
+  };
+  process.prependListener('unhandledRejection', end);
+  process.prependListener('uncaughtException', end);
+}
+
+const listening = (server: Server, port: number, host: string): Promise<void> =>
+  new Promise((resolve, reject) => {
+    server.once('error', reject);
+    server.listen(port, host, () => {
+      server.off('error', reject);
+      resolve();
+    });
+  });
+
+async function startServer(handler: Handler, options: StartOptions): Promise<Running> {
+  const settings = config();
+  const isWeb = settings.WAKELINE_ROLES.includes('web');
+  endOnUnhandled();
+  const assets = sirv(options.client, {
+    gzip: true, // .gz and .br written by the build
+    brotli: true,
+    dotfiles: false,
+    setHeaders: (res, path) => {
+      res.setHeader('X-Content-Type-Options', 'nosniff');
+      if (path.startsWith('/_astro/')) res.setHeader('Cache-Control', 'public, max-age=31536000, immutable');
+    },
+  });
+  const server = createServer((req, res) => {
+    if (!settings.TRUST_PROXY) dropForwarded(req); // Astro believes them from anybody
+    if (refuseEarly(req, res)) return;
+    if (!isWeb) return answer(req, res, 404, 'This process serves no pages.');
+    assets(req, res, () => void handler(req, res)); // without `next`: unknown paths get the 404 page
+  });
+  server.requestTimeout = 60_000;
+  server.on('upgrade', (req, socket, head) => {
+    if (!settings.TRUST_PROXY) dropForwarded(req);
+    if (!routeUpgrade(req, socket, head)) refuseUpgrade(socket, '404 Not Found');
+  });
+  await startRoles();
+  try {
+    await listening(server, options.port ?? settings.PORT, options.host ?? settings.HOST);
+  } catch (error) {
+    await stopRoles();
+    throw error;
+  }
+  return {
+    server,
+    stop: async () => {
+      const closed = new Promise<void>((resolve) => server.close(() => resolve()));
+      server.closeIdleConnections();
+      const force = setTimeout(() => server.closeAllConnections(), 3000);
+      await stopRoles(); // closes the sockets, for which server.close() waits
+      await closed;
+      clearTimeout(force);
+    },
+  };
+}
+
+export function createExports(manifest: SSRManifest, options: Parameters<typeof nodeExports>[1]) {
+  const base = nodeExports(manifest, options);
+  const handler = base.handler as Handler;
+  return { ...base, handler, startServer: (start: StartOptions) => startServer(handler, start) };
+}

@@ -1,0 +1,75 @@
+import fs from 'node:fs/promises';
+import path from 'node:path';
+import { fileURLToPath } from 'node:url';
+import { promisify } from 'node:util';
+import zlib from 'node:zlib';
+import node from '@astrojs/node';
+import type { AstroIntegration } from 'astro';
+
+type Roles = typeof import('./roles');
+
+const COMPRESSED = /\.(js|css|html|svg|json|xml|txt)$/;
+const WORTH_BYTES = 1024;
+
+/** Beside every text file of the build a .gz and a .br: sirv sends them as they are. */
+async function compress(folder: string): Promise<void> {
+  const gzip = promisify(zlib.gzip);
+  const brotli = promisify(zlib.brotliCompress);
+  for (const entry of await fs.readdir(folder, { recursive: true, withFileTypes: true })) {
+    if (!entry.isFile() || !COMPRESSED.test(entry.name)) continue;
+    const file = path.join(entry.parentPath, entry.name);
+    const content = await fs.readFile(file);
+    if (content.length < WORTH_BYTES) continue;
+    await fs.writeFile(`${file}.gz`, await gzip(content, { level: 9 }));
+    await fs.writeFile(`${file}.br`, await brotli(content));
+  }
+}
+
+/** @astrojs/node with our own server entry: one bundle, and the sockets of loggers and browsers in development too. */
+export default function host(): AstroIntegration {
+  const base = node({ mode: 'middleware' });
+  return {
+    ...base,
+    hooks: {
+      ...base.hooks,
+      'astro:config:done': (done) =>
+        base.hooks['astro:config:done']?.({
+          ...done,
+          setAdapter: (adapter) =>
+            done.setAdapter({
+              ...adapter,
+              serverEntrypoint: fileURLToPath(new URL('./entry.ts', import.meta.url)),
+              exports: ['handler', 'options', 'startServer'],
+            }),
+        }),
+      'astro:server:setup': ({ server, logger }) => {
+        let roles: Promise<Roles> | undefined;
+        const load = (): Promise<Roles> =>
+          (roles ??= server.ssrLoadModule('/src/server/roles.ts') as Promise<Roles>);
+        const report = (error: unknown): void =>
+          logger.error(error instanceof Error ? (error.stack ?? error.message) : String(error));
+        server.httpServer?.once('listening', () => {
+          load()
+            .then((loaded) => loaded.startRoles())
+            .catch(report);
+        });
+        server.httpServer?.on('upgrade', (req, socket, head: Buffer) => {
+          if (req.headers['sec-websocket-protocol']?.startsWith('vite')) return; // Vite's own
+          load()
+            .then(
+              (loaded) =>
+                loaded.routeUpgrade(req, socket, head) || loaded.refuseUpgrade(socket, '404 Not Found'),
+            )
+            .catch((error: unknown) => {
+              report(error);
+              socket.destroy();
+            });
+        });
+      },
+      'astro:build:done': async (done) => {
+        await base.hooks['astro:build:done']?.(done);
+        await compress(fileURLToPath(done.dir));
+      },
+    },
+  };
+}

@@ -1,0 +1,118 @@
+import fs from 'node:fs';
+import os from 'node:os';
+import path from 'node:path';
+import process from 'node:process';
+import { ensureChromium, ensurePostgres } from './programs.mjs';
+import { root } from './place.mjs';
+import { run } from './processes.mjs';
+import { elapsedS, say } from './say.mjs';
+
+const tool = (file) => [process.execPath, file];
+const STATIC = [
+  ['format', [[...tool('node_modules/prettier/bin/prettier.cjs'), '--check', '--log-level', 'warn', '.']]],
+  ['lint', [[...tool('node_modules/eslint/bin/eslint.js'), '.', '--max-warnings', '0']]],
+  [
+    'types',
+    [
+      [...tool('node_modules/astro/astro.js'), 'sync'],
+      [...tool('node_modules/typescript/bin/tsc'), '--noEmit', '-p', 'tsconfig.json'],
+      [...tool('node_modules/astro/astro.js'), 'check', '--minimumFailingSeverity', 'hint', '--noSync'],
+    ],
+  ],
+];
+
+// settings of the reader's shell are no part of a test
+const OURS =
+  /^(HOST|PORT|SIMULATOR_|COOKIE_SECURE|TRUST_PROXY|LOG_LEVEL|STUCK_GRACE_S|WAKELINE_ROLES|DATABASE_URL_|DATABASE_ONE_ROLE|NODE_ENV)/;
+const environment = () => ({
+  ...Object.fromEntries(Object.entries(process.env).filter(([name]) => !OURS.test(name))),
+  ASTRO_TELEMETRY_DISABLED: '1',
+  ASTRO_DISABLE_UPDATE_CHECK: 'true',
+});
+
+async function staticCheck([name, commands]) {
+  const from = elapsedS();
+  for (const [program, ...args] of commands) {
+    const result = await run(program, args, { cwd: root, env: environment() });
+    if (result.code !== 0) {
+      process.stdout.write(`${result.out.trim()}\n`);
+      say(`${name} failed`);
+      return { passed: 0, failed: 1 };
+    }
+  }
+  say(`${name} passed (${(elapsedS() - from).toFixed(1)} s)`);
+  return { passed: 1, failed: 0 };
+}
+
+/**
+ * Real counts from Vitest's own report. A test that did not run counts as failed, and so does a file that
+ * could not be loaded: nothing that was written down as a test goes missing.
+ */
+export function countReport(report) {
+  let passed = 0;
+  let failed = 0;
+  for (const file of report.testResults) {
+    for (const { status } of file.assertionResults)
+      if (status === 'passed') passed++;
+      else failed++;
+    if (file.status === 'failed' && !file.assertionResults.some(({ status }) => status !== 'passed'))
+      failed++;
+  }
+  if (!report.success && failed === 0) failed++; // an error outside any test
+  return { passed, failed };
+}
+
+async function vitest(projects) {
+  const from = elapsedS();
+  const report = path.join(fs.mkdtempSync(path.join(os.tmpdir(), 'wakeline-test-')), 'report.json');
+  try {
+    const result = await run(
+      process.execPath,
+      [
+        ...['node_modules/vitest/vitest.mjs', 'run', ...projects.flatMap((name) => ['--project', name])],
+        ...['--reporter', 'dot', '--reporter', 'json', `--outputFile.json=${report}`],
+      ],
+      { cwd: root, env: environment(), onLine: (line) => process.stdout.write(`${line}\n`) },
+    );
+    let counts = { passed: 0, failed: 1 };
+    try {
+      counts = countReport(JSON.parse(fs.readFileSync(report, 'utf8')));
+    } catch {
+      say(`Vitest wrote no report (exit ${result.code ?? result.signal})`);
+    }
+    if (result.code !== 0 && counts.failed === 0) counts.failed = 1;
+    say(
+      `${projects.join(', ')}: ${counts.passed} passed, ${counts.failed} failed (${(elapsedS() - from).toFixed(1)} s)`,
+    );
+    return counts;
+  } finally {
+    fs.rmSync(path.dirname(report), { recursive: true, force: true });
+  }
+}
+
+async function sum(steps) {
+  const total = { passed: 0, failed: 0 };
+  for (const step of steps) {
+    const { passed, failed } = await step();
+    total.passed += passed;
+    total.failed += failed;
+  }
+  process.stdout.write(`${total.passed} passed, ${total.failed} failed\n`);
+  return total.failed === 0 && total.passed > 0 ? 0 : 1;
+}
+
+const staticSteps = STATIC.map((check) => () => staticCheck(check));
+
+/** Every check and test. The last line is `N passed, N failed`. */
+export async function test() {
+  if (!process.env.DATABASE_URL) await ensurePostgres();
+  await ensureChromium();
+  return sum([
+    ...staticSteps,
+    () => vitest(['architecture', 'unit', 'integration', 'migrations']),
+    () => vitest(['access', 'e2e']),
+  ]);
+}
+
+/** The quick half, for the desk: no database, no browser. */
+export const check = () => sum([...staticSteps, () => vitest(['architecture', 'unit'])]);
