@@ -11,10 +11,11 @@ import {
 import { currentAtVoltage, maximumPowerPoint, vocOfDiode, voltageAtCurrent } from './single-diode';
 
 /**
- * One module for bulk work: the De Soto model with what depends on temperature alone read from tables, and the maximum
- * power point interpolated. Against the exact model, for 1 to 1500 W/m² and −40 to 100 °C (tested): voc, voltage and
- * current within 0.01 %, vmp, imp and pmp within 0.1 %. Outside that range the exact model answers. All functions take
- * poaGlobal (W/m², 0 to 2000) and temperatureCell (°C, −90 to 150) and throw a RangeError outside.
+ * One module for bulk work: the De Soto model with what depends on temperature alone read from a table, and the maximum
+ * power point interpolated. Against the exact model, for 1 to 1500 W/m² and −40 to 100 °C (tested): voc and voltage
+ * within 0.01 % of voc, current within 0.1 % of isc, vmp, imp and pmp within 0.05 % from 20 W/m² up and 0.2 % below.
+ * Outside that range the exact model answers. All functions take poaGlobal (W/m², 0 to 2000) and temperatureCell (°C,
+ * −90 to 150) and throw a RangeError outside.
  */
 export interface FastModule {
   readonly reference: DiodeReference;
