@@ -87,6 +87,29 @@ export function judgementTimes(reportIntervalS: number, timeLimitS: number): Jud
   };
 }
 
+/** Limits (cV) that part outputs "in shutdown" from "passing", made once per unit type. */
+export interface OutputLimits {
+  /** At or above: not in shutdown, whatever it claims. */
+  passingFromCv: number;
+  /** Between these: a unit in shutdown on an open string. */
+  shutdownFromCv: number;
+  shutdownToCv: number;
+  /** Module-side voltage that shows that the module itself is lit, cV. */
+  litFromCv: number;
+  measuresOutput: boolean;
+}
+
+/** What follows from a context alone, and what is in force around the time last asked for. */
+export interface Prepared {
+  limits: OutputLimits;
+  units: number;
+  command: Commanded;
+  light: LightSpan;
+  /** `command` and `light` hold from here until there, epoch seconds. */
+  fromS: number;
+  untilS: number;
+}
+
 export interface StringContext {
   behaviour: UnitBehaviour;
   times: JudgementTimes;
@@ -101,6 +124,8 @@ export interface StringContext {
   light: readonly LightSpan[];
   /** Weather and neighbours speak for snow on the modules: a string that doesn't wake is `dark`, not `silent`. */
   snowLikely: boolean;
+  /** Worked out from the rest by the judgement, for speed. Leave it out of a new context. */
+  prepared?: Prepared;
 }
 
 const pointAt = <T extends { sinceS: number }>(points: readonly T[], atS: number): T | undefined => {

@@ -1,4 +1,11 @@
-import { commandedAt, lightAt, type Commanded, type LightSpan, type StringContext } from './context';
+import {
+  commandedAt,
+  lightAt,
+  type Commanded,
+  type LightSpan,
+  type Prepared,
+  type StringContext,
+} from './context';
 import {
   evidenceFor,
   stateOf,
@@ -9,7 +16,7 @@ import {
   type UnitChange,
 } from './evidence';
 import { NO_STATE, SEEN_PASSING, SEEN_SHUTDOWN, type StringMemory } from './memory';
-import { MEASURED, outputLimits, seenOutput, type OutputLimits } from './observe';
+import { MEASURED, outputLimits, scanFrame, type JudgedFrame } from './observe';
 import { UNIT_STATES, VERDICTS } from './codes';
 
 /**
@@ -17,14 +24,6 @@ import { UNIT_STATES, VERDICTS } from './codes';
  * measured on its conductors contradicts it. Silence, night and time limits are for `sweepString`; voltages of the
  * string as a whole for `judgeInput`.
  */
-
-/** One frame of a string as it comes over the wire: arrays in slot order, null = not heard. cV. */
-export interface JudgedFrame {
-  atS: number;
-  state: readonly (number | null)[];
-  voltageOut?: readonly (number | null)[] | undefined;
-  voltageIn?: readonly (number | null)[] | undefined;
-}
 
 const UNHEARD = UNIT_STATES.indexOf('unheard');
 const PASSING = UNIT_STATES.indexOf('passing');
@@ -43,19 +42,24 @@ const SILENT_AFTER_INTERVALS = 3;
 /** A gap in a unit's reports that counts as a night when nobody swept in between, seconds. */
 const NIGHT_GAP_S = 4 * 3600;
 
-/** What follows from a context alone, made once per context object. */
-interface Prepared {
-  limits: OutputLimits;
-  units: number;
-}
-const preparedOf = new WeakMap<StringContext, Prepared>();
-function prepared(context: StringContext): Prepared {
-  let known = preparedOf.get(context);
-  if (known === undefined) {
-    known = { limits: outputLimits(context.behaviour), units: context.slots.filter(Boolean).length };
-    preparedOf.set(context, known);
-  }
-  return known;
+/** The context's own figures for `atS`, made once and again only when a command or the light changes. */
+function preparedFor(context: StringContext, atS: number): Prepared {
+  const known = context.prepared;
+  if (known !== undefined && atS >= known.fromS && atS < known.untilS) return known;
+  const command = commandedAt(context.commands, atS);
+  const light = lightAt(context.light, atS);
+  let untilS = Infinity;
+  for (const c of context.commands) if (c.sinceS > atS) untilS = Math.min(untilS, c.sinceS);
+  for (const l of context.light) if (l.sinceS > atS) untilS = Math.min(untilS, l.sinceS);
+  context.prepared = {
+    limits: known?.limits ?? outputLimits(context.behaviour),
+    units: known?.units ?? context.slots.filter(Boolean).length,
+    command,
+    light,
+    fromS: Math.max(command.sinceS, light.sinceS),
+    untilS,
+  };
+  return context.prepared;
 }
 
 /**
@@ -65,68 +69,59 @@ function prepared(context: StringContext): Prepared {
  * Returns what changed; `UNCHANGED` (the same object, nothing allocated) when nothing did.
  */
 export function judgeFrame(memory: StringMemory, context: StringContext, frame: JudgedFrame): JudgeOutcome {
-  const { atS, state: claims, voltageOut, voltageIn } = frame;
+  const { atS, state: claims } = frame;
   if (atS < memory.atS || context.behaviour.kind === 'shutdown_only') return UNCHANGED;
-  const command = commandedAt(context.commands, atS);
-  const light = lightAt(context.light, atS);
-  const { limits, units } = prepared(context);
+  const { limits, units, command, light } = preparedFor(context, atS);
   const newCommand = takeCommand(memory, command);
-  const settledOutput =
-    command.expects === 'passing' ? SEEN_PASSING : command.expects === 'shutdown' ? SEEN_SHUTDOWN : 0;
-  const settledState = settledOutput === SEEN_PASSING ? PASSING : SHUTDOWN;
-  const { seen, output, state, verdict, claim, measured, followedTo } = memory;
+  const { seen, settled } = memory;
+  if (atS - memory.atS >= NIGHT_GAP_S) settled.fill(-1);
   const n = Math.min(context.slots.length, claims.length);
 
-  let sum = 0;
-  let summed = 0;
-  let reported = false;
-  let unsettled = newCommand;
-  for (let i = 0; i < n; i++) {
-    const said = claims[i];
-    if (said === null || said === undefined || !context.slots[i]) continue;
-    const out = voltageOut === undefined ? null : voltageOut[i];
-    const shown = seenOutput(limits, said, out, voltageIn === undefined ? null : voltageIn[i]);
-    if (out !== null && out !== undefined) {
-      sum += out;
-      summed++;
+  const { unsettled, heard, outputs, outputSum, shown } = scanFrame(limits, frame, settled, seen);
+  if (unsettled > 0)
+    for (let i = 0; i < n; i++) {
+      const shows = shown[i]!;
+      if (shows === -1 || !context.slots[i]) continue;
+      memory.claim[i] = claims[i]!;
+      memory.measured[i] = shows & MEASURED ? 1 : 0;
+      takeReport(memory, context, command, light, i, shows & 3, atS);
     }
-    reported = true;
-    const now = shown & 3;
-    claim[i] = said;
-    measured[i] = shown & MEASURED ? 1 : 0;
-    // the ordinary case: as commanded, as before
-    if (
-      now === settledOutput &&
-      now !== 0 &&
-      output[i] === now &&
-      state[i] === settledState &&
-      verdict[i] === OK &&
-      atS - seen[i]! < NIGHT_GAP_S &&
-      (settledOutput === SEEN_PASSING || followedTo[i]! >= 0)
-    ) {
-      seen[i] = atS;
-    } else {
-      takeReport(memory, context, command, light, i, now, atS);
-      unsettled = true;
-    }
-  }
   memory.atS = atS;
-  if (reported && light.light === 'light' && (memory.stringFirst === 0 || memory.stringFirst < light.sinceS))
+  if (heard > 0 && light.light === 'light' && (memory.stringFirst === 0 || memory.stringFirst < light.sinceS))
     memory.stringFirst = atS;
-  if (summed === units && summed > 0) {
-    memory.sumV = sum / 100;
+  if (outputs === units && units > 0) {
+    memory.sumV = outputSum / 100;
     memory.sumAtS = atS;
   }
-  if (!unsettled) return UNCHANGED;
+  if (unsettled === 0 && !newCommand) return UNCHANGED;
 
   const changes: UnitChange[] = [];
   const asOf = Math.max(atS, memory.sweptAtS);
   for (let i = 0; i < n; i++) {
-    if (!context.slots[i] || (seen[i] !== atS && !newCommand)) continue;
-    const change = decide(memory, context, command, light, i, seen[i] === atS ? atS : asOf, asOf);
+    if (!context.slots[i] || (!newCommand && (seen[i] !== atS || settled[i] !== -1))) continue;
+    const reports = seen[i] === atS;
+    const change = decide(memory, context, command, light, i, reports ? atS : asOf, asOf);
     if (change !== null) changes.push(change);
+    if (reports) settle(memory, command, i);
   }
   return outcome(changes, newCommand ? endFinding(memory, atS) : null);
+}
+
+/** Notes what slot `i` would have to report to be as commanded and as before, so that the loop can pass it by. */
+function settle(memory: StringMemory, command: Commanded, i: number): void {
+  const output = memory.output[i]!;
+  const claim = memory.claim[i]!;
+  const passing = command.expects === 'passing' && output === SEEN_PASSING && memory.state[i] === PASSING;
+  const followed =
+    command.expects === 'shutdown' &&
+    output === SEEN_SHUTDOWN &&
+    memory.state[i] === SHUTDOWN &&
+    memory.followedTo[i]! >= 0;
+  const says = claim > 0 && claim < 4; // a claim of nothing or of fault is looked at each time
+  memory.settled[i] =
+    (passing || followed) && says && memory.verdict[i] === OK
+      ? claim * 8 + output + (memory.measured[i] === 1 ? MEASURED : 0)
+      : -1;
 }
 
 /**
@@ -137,8 +132,7 @@ export function judgeFrame(memory: StringMemory, context: StringContext, frame: 
 export function sweepString(memory: StringMemory, context: StringContext, nowS: number): JudgeOutcome {
   if (nowS < memory.sweptAtS || nowS < memory.atS) return UNCHANGED;
   memory.sweptAtS = nowS;
-  const command = commandedAt(context.commands, nowS);
-  const light = lightAt(context.light, nowS);
+  const { command, light } = preparedFor(context, nowS);
   const newCommand = takeCommand(memory, command);
   let changes: UnitChange[] | null = null;
   for (let i = 0; i < context.slots.length; i++) {
@@ -171,6 +165,7 @@ function takeCommand(memory: StringMemory, command: Commanded): boolean {
   memory.commandExpects = command.expects;
   memory.followedFrom.fill(-1);
   memory.followedTo.fill(-1);
+  memory.settled.fill(-1);
   return true;
 }
 
@@ -187,6 +182,7 @@ function takeReport(
   const before = memory.output[i]!;
   const seenBefore = memory.seen[i]!;
   memory.seen[i] = atS;
+  memory.settled[i] = -1;
   const state = memory.state[i];
   if (seenBefore === 0 || state === DARK || state === UNHEARD || atS - seenBefore >= NIGHT_GAP_S)
     memory.first[i] = atS;
@@ -247,6 +243,7 @@ function decide(
   const at = Math.min(atS, Math.max(due, memory.since[i]!));
   memory.state[i] = state;
   memory.verdict[i] = verdict;
+  memory.settled[i] = -1;
   if (verdict !== verdictBefore || verdict === OK) memory.since[i] = at;
   return {
     slot: i,
@@ -308,7 +305,7 @@ function decideVerdict(
     const limitS = limitFor(context, command);
     const heldSince = before === NOT_SHUTTING_DOWN && memory.since[i]! >= command.sinceS;
     if (state === PASSING) {
-      if (seen >= command.sinceS + limitS || heldSince) return NOT_SHUTTING_DOWN;
+      if (seen > command.sinceS + limitS || heldSince) return NOT_SHUTTING_DOWN;
     } else if (state === SHUTDOWN) {
       if (memory.followedFrom[i]! >= limitS) return LATE;
       if (seen >= command.sinceS) return OK;

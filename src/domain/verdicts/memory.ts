@@ -59,6 +59,8 @@ export interface StringMemory {
   followedTo: number[];
   flaps: number[];
   flapFrom: number[];
+  /** What the slot would report if nothing changed (claim × 8 + what its output shows); −1: look closely. */
+  settled: number[];
   /** First report of any unit of the string today. */
   stringFirst: number;
   commandSince: number;
@@ -95,6 +97,7 @@ export function newMemory(context: Pick<StringContext, 'slots' | 'behaviour'>): 
     followedTo: zeros(n).fill(-1),
     flaps: zeros(n),
     flapFrom: zeros(n),
+    settled: zeros(n).fill(-1),
     stringFirst: 0,
     commandSince: 0,
     commandExpects: '',
@@ -129,6 +132,7 @@ const PER_SLOT = [
   'followedTo',
   'flaps',
   'flapFrom',
+  'settled',
 ] as const satisfies readonly (keyof StringMemory)[];
 
 /** How many slots are in each state and verdict; the words of codes.ts. Empty slots don't count. */

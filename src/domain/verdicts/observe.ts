@@ -1,4 +1,4 @@
-import type { UnitBehaviour } from './context';
+import type { OutputLimits, UnitBehaviour } from './context';
 import type { Claim } from './codes';
 import { SEEN_PASSING, SEEN_SHUTDOWN } from './memory';
 
@@ -6,18 +6,6 @@ import { SEEN_PASSING, SEEN_SHUTDOWN } from './memory';
 const PASSING = 1;
 const SHUTDOWN = 2;
 const STARTING = 3;
-
-/** Limits (cV) that part outputs "in shutdown" from "passing", made once per unit type. */
-export interface OutputLimits {
-  /** At or above: not in shutdown, whatever it claims. */
-  passingFromCv: number;
-  /** Between these: a unit in shutdown on an open string. */
-  shutdownFromCv: number;
-  shutdownToCv: number;
-  /** Module-side voltage that shows that the module itself is lit, cV. */
-  litFromCv: number;
-  measuresOutput: boolean;
-}
 
 /**
  * Limits from the type entered: well above three times its highest shutdown voltage (3 V at least) a unit can't be in
@@ -27,37 +15,88 @@ export interface OutputLimits {
 export function outputLimits(behaviour: Pick<UnitBehaviour, 'shutdownVoltage' | 'measures'>): OutputLimits {
   const { min, max } = behaviour.shutdownVoltage;
   return {
-    passingFromCv: Math.max(3, 3 * max) * 100,
-    shutdownFromCv: 0.5 * min * 100,
-    shutdownToCv: (1.5 * max + 0.1) * 100,
-    litFromCv: Math.max(5, 5 * max) * 100,
+    passingFromCv: Math.round(Math.max(3, 3 * max) * 100),
+    shutdownFromCv: Math.round(0.5 * min * 100),
+    shutdownToCv: Math.round((1.5 * max + 0.1) * 100),
+    litFromCv: Math.round(Math.max(5, 5 * max) * 100),
     measuresOutput: behaviour.measures === 'output' || behaviour.measures === 'both',
   };
 }
 
-/** `seen`: SEEN_PASSING, SEEN_SHUTDOWN or 0 (can't tell); odd one out: `measured` says that a voltage showed it. */
+/** Added to SEEN_PASSING or SEEN_SHUTDOWN where a voltage on the unit's conductors showed it. */
 export const MEASURED = 4;
 
+/** One frame of a string as it comes over the wire: arrays in slot order, null = not heard. cV. */
+export interface JudgedFrame {
+  atS: number;
+  state: readonly (number | null)[];
+  voltageOut?: readonly (number | null)[] | undefined;
+  voltageIn?: readonly (number | null)[] | undefined;
+}
+
+/** What `scanFrame` found; one object is used again and again, so read it before the next scan. */
+export interface Scan {
+  /** Slots that don't report what they are settled on. */
+  unsettled: number;
+  heard: number;
+  /** Sum of the outputs that were measured, cV, and how many there were. */
+  outputSum: number;
+  outputs: number;
+  /**
+   * What each slot's report shows of its output: SEEN_PASSING or SEEN_SHUTDOWN, plus MEASURED where a voltage showed
+   * it; 0: can't tell; −1: not heard, or as settled.
+   */
+  shown: Int8Array;
+}
+const scan: Scan = { unsettled: 0, heard: 0, outputSum: 0, outputs: 0, shown: new Int8Array(256) };
+
 /**
- * What one report shows of a unit's output: its claim, unless the voltage measured on its conductors says otherwise.
- * A negative output proves nothing: under string current a unit in shutdown and a shaded module both show one.
- * Returns SEEN_PASSING or SEEN_SHUTDOWN, plus MEASURED where a voltage showed it; 0: can't tell.
+ * Runs over one frame: a unit's output is what it claims, unless the voltage measured on its conductors says otherwise.
+ * A negative output proves nothing: under string current a unit in shutdown and a shaded module both show one, so only
+ * a lit module behind it tells. A slot that reports what it is settled on (`settled`: claim × 8 + shown) is passed by
+ * with its time of report in `seen`. This is the loop that every reading runs through: it is written out for speed.
  */
-export function seenOutput(
-  limits: OutputLimits,
-  claim: number,
-  voltageOutCv: number | null | undefined,
-  voltageInCv: number | null | undefined,
-): number {
-  if (limits.measuresOutput && voltageOutCv !== null && voltageOutCv !== undefined) {
-    if (voltageOutCv >= limits.passingFromCv) return SEEN_PASSING + MEASURED;
-    const low = voltageOutCv <= limits.shutdownToCv;
-    const moduleLit = voltageInCv !== null && voltageInCv !== undefined && voltageInCv >= limits.litFromCv;
-    if (low && (voltageOutCv >= limits.shutdownFromCv || moduleLit)) return SEEN_SHUTDOWN + MEASURED;
+export function scanFrame(limits: OutputLimits, frame: JudgedFrame, settled: number[], seen: number[]): Scan {
+  const { atS, state, voltageOut, voltageIn } = frame;
+  const { passingFromCv, shutdownFromCv, shutdownToCv, litFromCv, measuresOutput } = limits;
+  const shown = scan.shown;
+  const n = Math.min(settled.length, state.length);
+  let unsettled = 0;
+  let heard = 0;
+  let outputSum = 0;
+  let outputs = 0;
+  for (let i = 0; i < n; i++) {
+    shown[i] = -1;
+    const claim = state[i];
+    if (claim === null || claim === undefined) continue;
+    heard++;
+    let shows =
+      claim === PASSING ? SEEN_PASSING : claim === SHUTDOWN || claim === STARTING ? SEEN_SHUTDOWN : 0;
+    const out = voltageOut === undefined ? null : voltageOut[i];
+    if (out !== null && out !== undefined) {
+      outputSum += out;
+      outputs++;
+      if (measuresOutput) {
+        if (out >= passingFromCv) shows = SEEN_PASSING + MEASURED;
+        else if (out <= shutdownToCv) {
+          const behind = voltageIn === undefined ? null : voltageIn[i];
+          const lit = behind !== null && behind !== undefined && behind >= litFromCv;
+          if (out >= shutdownFromCv || lit) shows = SEEN_SHUTDOWN + MEASURED;
+        }
+      }
+    }
+    if (settled[i] === claim * 8 + shows) {
+      seen[i] = atS;
+    } else {
+      shown[i] = shows;
+      unsettled++;
+    }
   }
-  if (claim === PASSING) return SEEN_PASSING;
-  if (claim === SHUTDOWN || claim === STARTING) return SEEN_SHUTDOWN;
-  return 0;
+  scan.unsettled = unsettled;
+  scan.heard = heard;
+  scan.outputSum = outputSum;
+  scan.outputs = outputs;
+  return scan;
 }
 
 /**

@@ -1,0 +1,145 @@
+import { describe, expect, it } from 'vitest';
+import { UNIT_PRESETS } from '../equipment/unit-type';
+import { judgeInput, type InputReading } from './conductors';
+import { commandedSpans, judgementTimes, type CommandPoint, type StringContext } from './context';
+import { UNCHANGED } from './evidence';
+import { judgeFrame, sweepString } from './judge';
+import { newMemory, type StringMemory } from './memory';
+
+const NOON = 1_750_000_000;
+const released: CommandPoint = { sinceS: NOON - 86_400, inForce: 'released' };
+const pressed: CommandPoint = { sinceS: NOON, inForce: 'initiator' };
+
+function contextOf(kind: 'shutdown_only' | 'monitored', zone: CommandPoint[], n: number): StringContext {
+  const behaviour = UNIT_PRESETS[kind];
+  return {
+    behaviour,
+    times: judgementTimes(60, 30),
+    timeLimitSource: '',
+    slots: new Array<boolean>(n).fill(true),
+    heardAtS: new Array<number>(n).fill(0),
+    commands: commandedSpans(behaviour, 'operating', zone, []),
+    light: [],
+    snowLikely: false,
+  };
+}
+const reading = (atS: number, voltageV: number, more: Partial<InputReading> = {}): InputReading => ({
+  atS,
+  voltageV,
+  currentA: 0,
+  strings: 1,
+  module: { expectedV: 40, relativeSd: 0.01 },
+  ...more,
+});
+const feed = (
+  memory: StringMemory,
+  context: StringContext,
+  fromS: number,
+  volts: number[],
+  more: Partial<InputReading> = {},
+) => volts.map((v, k) => judgeInput(memory, context, reading(fromS + 60 * k, v, more)).finding);
+
+describe('a home run that stays up', () => {
+  it('is not shutting down, position unknown, while every unit claims shutdown', () => {
+    const context = contextOf('monitored', [released, pressed], 10);
+    const memory = newMemory(context);
+    judgeFrame(memory, context, { atS: NOON + 20, state: new Array<number>(10).fill(2) });
+    const found = feed(memory, context, NOON + 60, [400, 400, 84.4, 84.2]);
+    expect(found.slice(0, 2)).toEqual([null, null]); // capacitors may still hold it up
+    expect(found[2]).toBeNull(); // one reading may be a stray
+    expect(found[3]?.finding).toMatchObject({
+      kind: 'not_shutting_down',
+      evidence: { scope: 'string', thresholdV: 30, ofN: 10, units: 2 },
+    });
+  });
+  it('is left to the unit that says that it passes', () => {
+    const context = contextOf('monitored', [released, pressed], 10);
+    const memory = newMemory(context);
+    judgeFrame(memory, context, { atS: NOON + 90, state: [1, ...new Array<number>(9).fill(2)] });
+    expect(feed(memory, context, NOON + 200, [45, 45, 45])).toEqual([null, null, null]);
+  });
+  it('ends with the release, and a shared input is named as such', () => {
+    const zone = [released, pressed, { sinceS: NOON + 900, inForce: 'released' as const }];
+    const context = contextOf('shutdown_only', zone, 10);
+    const memory = newMemory(context);
+    sweepString(memory, context, NOON + 40);
+    const found = feed(memory, context, NOON + 200, [390, 390], { strings: 2 });
+    expect(found[1]?.finding?.evidence).toMatchObject({ scope: 'input', units: null });
+    expect(sweepString(memory, context, NOON + 905).finding).toMatchObject({
+      finding: null,
+      before: 'not_shutting_down',
+    });
+  });
+  it('takes a few volts for what they are', () => {
+    const context = contextOf('shutdown_only', [released, pressed], 14);
+    const memory = newMemory(context);
+    expect(feed(memory, context, NOON + 200, [8.4, 8.4, 8.4])).toEqual([null, null, null]);
+  });
+});
+
+describe('a released string whose units tell nothing', () => {
+  it('counts the held ones from the voltage, and forgives one odd reading', () => {
+    const context = contextOf('shutdown_only', [released], 12);
+    const memory = newMemory(context);
+    // 10 × 40 V, two by their bypass path at −0.5 V, under load
+    const found = feed(memory, context, NOON, [399, 480, 399, 399, 399], { currentA: 6 });
+    expect(found.slice(0, 4)).toEqual([null, null, null, null]);
+    expect(found[4]?.finding).toMatchObject({
+      kind: 'stuck_positions_unknown',
+      evidence: { units: 2, ofN: 12, scope: 'string' },
+    });
+    expect(feed(memory, context, NOON + 300, [480, 480], { currentA: 6 })[1]).toMatchObject({
+      finding: null,
+    });
+  });
+  it('says nothing of a deficit that its expectation cannot carry', () => {
+    const context = contextOf('shutdown_only', [released], 12);
+    const memory = newMemory(context);
+    const wide = { module: { expectedV: 40, relativeSd: 0.06 }, currentA: 6 };
+    expect(feed(memory, context, NOON, [440, 440, 440, 440], wide)).toEqual([null, null, null, null]);
+  });
+  it('says nothing of one string among parallel ones, unless all are down', () => {
+    const context = contextOf('shutdown_only', [released], 12);
+    const memory = newMemory(context);
+    expect(feed(memory, context, NOON, [430, 430, 430], { strings: 3, currentA: 9 })).toEqual([
+      null,
+      null,
+      null,
+    ]);
+    const found = feed(memory, context, NOON + 300, [7.2, 7.2, 7.2], { strings: 3 });
+    expect(found[2]?.finding?.evidence).toMatchObject({ scope: 'input', units: 12, ofN: 12 });
+  });
+  it('keeps still by night', () => {
+    const context = {
+      ...contextOf('shutdown_only', [released], 12),
+      light: [{ sinceS: 0, light: 'dark' as const }],
+    };
+    expect(judgeInput(newMemory(context), context, reading(NOON, 0))).toBe(UNCHANGED);
+  });
+});
+
+describe('a measured string on its input', () => {
+  const frame = (atS: number, each: number[]) => ({
+    atS,
+    state: each.map(() => 1),
+    voltageOut: each.map((v) => v * 100),
+  });
+  it('is unexplained when the input has a module more than the units give', () => {
+    const context = contextOf('monitored', [released], 10);
+    const memory = newMemory(context);
+    const found = [0, 1, 2].map((k) => {
+      judgeFrame(memory, context, frame(NOON + 60 * k, new Array<number>(10).fill(35)));
+      return judgeInput(memory, context, reading(NOON + 60 * k, 385)).finding;
+    });
+    expect(found[2]?.finding).toMatchObject({ kind: 'unexplained_voltage' });
+    expect(found[2]?.finding?.evidence.couldBe[0]).toContain('without its unit');
+  });
+  it('is explained within cable and accuracy', () => {
+    const context = contextOf('monitored', [released], 10);
+    const memory = newMemory(context);
+    for (let k = 0; k < 4; k++) {
+      judgeFrame(memory, context, frame(NOON + 60 * k, new Array<number>(10).fill(35)));
+      expect(judgeInput(memory, context, reading(NOON + 60 * k, 346, { currentA: 9 }))).toBe(UNCHANGED);
+    }
+  });
+});
