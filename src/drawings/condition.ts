@@ -35,8 +35,9 @@ export function rise(slot: DrawnSlot): number | null {
   if (slot.serial === null) return 0;
   const condition = conditionOf(slot);
   if (condition === 'silent' || condition === 'unheard' || condition === 'untold') return null;
+  if (condition === 'dark') return 0;
   if (slot.voltage !== null) return slot.voltage;
-  if (!slot.assumed) return condition === 'dark' ? 0 : null;
+  if (!slot.assumed) return null;
   return slot.state === 'passing' ? slot.voltageIn : 0;
 }
 

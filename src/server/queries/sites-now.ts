@@ -1,0 +1,173 @@
+import { solarPositionQuick } from '../../domain/photovoltaics/sun/position-quick';
+import type { CommandNow, Counts, SiteNow } from '../../schemas/api/now';
+import type { InForce } from '../../domain/verdicts/codes';
+import type { Tx } from '../db/transaction';
+import { isFresh, isLight, isSilent } from './now';
+import { SITE_VISIBLE } from './visible-site';
+
+interface Row extends Counts {
+  id: number;
+  ref: string;
+  name: string;
+  place: string;
+  timeZone: string;
+  stage: SiteNow['stage'];
+  latitude: number;
+  longitude: number;
+  altitude: number;
+  reportIntervalS: number;
+  strings: number;
+  zones: number;
+  acPower: number | null;
+  acPowerAt: Date | null;
+  acPowerMax: number;
+  reportedAt: Date | null;
+  gatewaysHeard: (string | null)[];
+  spokeAt: Date | null;
+  said: { where: string; whereKind: CommandNow['whereKind']; inForce: InForce; since: string; by: string }[];
+}
+
+/**
+ * What holds at `at` at the sites that the actor sees, or at those of the given numbers (then whoever calls has checked
+ * them); by name. A fixed number of statements, however many sites.
+ */
+export async function sitesNow(tx: Tx, at: Date, siteIds?: readonly number[]): Promise<SiteNow[]> {
+  const { rows } = await tx.raw<{ rows: Row[] }>(
+    `with chosen as (select * from site where ${siteIds ? 'site.id = any (:siteIds)' : SITE_VISIBLE}),
+     judged as (
+       select site_id, sum(passing)::int as passing, sum(shutdown)::int as shutdown, sum(unheard)::int as unheard,
+              sum(silent)::int as silent, sum(dark)::int as dark, sum(stuck)::int as stuck,
+              sum(not_shutting_down)::int as not_shutting_down, sum(unconfirmed)::int as unconfirmed
+       from string_judgement where site_id in (select id from chosen) group by site_id),
+     placed as (
+       select site_id, count(*)::int as units from placement
+       where placed_to is null and site_id in (select id from chosen) group by site_id),
+     wired as (select site_id, count(*)::int as strings from string group by site_id),
+     made as (
+       select inv.site_id, sum(inv.ac_power_max) as ac_power_max, sum(st.ac_power)::float8 as ac_power, max(st.at) as at
+       from inverter inv left join inverter_state st on st.inverter_id = inv.id group by inv.site_id),
+     reported as (select site_id, max(at) as at from string_state group by site_id),
+     said as (
+       select distinct on (c.zone_id, c.transmitter_id) c.site_id, c.in_force, c.since, c.said_by,
+              coalesce(z.name, t.name) as name, case when c.zone_id is null then 'transmitter' else 'zone' end as kind
+       from command c
+       left join zone z on z.id = c.zone_id
+       left join transmitter t on t.id = c.transmitter_id
+       where c.site_id in (select id from chosen)
+       order by c.zone_id, c.transmitter_id, c.since desc)
+     select c.id, c.ref, c.name, c.place, c.time_zone as "timeZone", c.stage, c.latitude, c.longitude, c.altitude,
+            c.report_interval_s as "reportIntervalS",
+            coalesce(p.units, 0) as units, coalesce(w.strings, 0) as strings,
+            coalesce(j.passing, 0) as passing, coalesce(j.shutdown, 0) as shutdown,
+            coalesce(j.unheard, 0) as unheard, coalesce(j.silent, 0) as silent, coalesce(j.dark, 0) as dark,
+            coalesce(j.stuck, 0) as stuck, coalesce(j.not_shutting_down, 0) as "notShuttingDown",
+            coalesce(j.unconfirmed, 0) as unconfirmed,
+            m.ac_power as "acPower", m.at as "acPowerAt", coalesce(m.ac_power_max, 0) as "acPowerMax",
+            r.at as "reportedAt",
+            (select count(*)::int from zone z where z.site_id = c.id) as zones,
+            coalesce((select json_agg(g.last_heard_at) from gateway g where g.site_id = c.id), '[]') as "gatewaysHeard",
+            (select max(l.last_spoke_at) from logger l where l.site_id = c.id and l.connected_at is not null) as "spokeAt",
+            coalesce((select json_agg(json_build_object('where', s.name, 'whereKind', s.kind, 'inForce', s.in_force,
+                       'since', s.since, 'by', s.said_by) order by s.since)
+                      from said s where s.site_id = c.id and s.in_force <> 'released'), '[]') as said
+     from chosen c
+     left join judged j on j.site_id = c.id
+     left join placed p on p.site_id = c.id
+     left join wired w on w.site_id = c.id
+     left join made m on m.site_id = c.id
+     left join reported r on r.site_id = c.id
+     order by c.name`,
+    siteIds ? { siteIds: [...siteIds] } : {},
+  );
+  const ratios = await performanceRatios(
+    tx,
+    rows.map((r) => r.id),
+    at,
+  );
+  return rows.map((row) => siteOf(row, at, ratios.get(row.id) ?? null));
+}
+
+function siteOf(row: Row, at: Date, performanceRatio: number | null): SiteNow {
+  const commands = row.said.map((s) => ({ ...s, since: new Date(s.since).toISOString() }));
+  const zonesDown = commands.filter((c) => c.whereKind === 'zone');
+  const power =
+    row.acPower !== null && row.acPowerAt && isFresh(row.acPowerAt, at, row.reportIntervalS)
+      ? row.acPower
+      : null;
+  const light = isLight(row, at);
+  return {
+    id: row.ref,
+    name: row.name,
+    place: row.place,
+    timeZone: row.timeZone,
+    stage: row.stage,
+    counts: {
+      units: row.units,
+      passing: row.passing,
+      shutdown: row.shutdown,
+      unheard: row.unheard,
+      silent: row.silent,
+      dark: row.dark,
+      stuck: row.stuck,
+      notShuttingDown: row.notShuttingDown,
+      unconfirmed: row.unconfirmed,
+    },
+    strings: row.strings,
+    power,
+    acPowerMax: row.acPowerMax,
+    reportedAt: row.reportedAt?.toISOString() ?? null,
+    daylight: solarPositionQuick(at.getTime(), row).apparentElevation > 0,
+    // every zone is in shutdown since the last of them went
+    inShutdownSince:
+      row.zones > 0 && zonesDown.length === row.zones
+        ? (zonesDown
+            .map((c) => c.since)
+            .sort()
+            .at(-1) ?? null)
+        : null,
+    commands,
+    silentGateways: light
+      ? row.gatewaysHeard.filter((heard) => isSilent(heard ? new Date(heard) : null, at, row.reportIntervalS))
+          .length
+      : 0,
+    loggerConnected: row.spokeAt !== null && !isSilent(row.spokeAt, at, Math.max(60, row.reportIntervalS)),
+    performanceRatio30d: performanceRatio,
+  };
+}
+
+// thirty days change little in a quarter of an hour, and /live asks often
+const RATIO_KEPT_MS = 15 * 60_000;
+const ratiosKept = new Map<number, { untilMs: number; ratio: number | null }>();
+
+/**
+ * Performance ratio (IEC 61724-1: final yield over reference yield) of the last 30 days, over the quarters whose plane
+ * irradiance was measured; null without a sensor or with less than 5 kWh/m².
+ */
+async function performanceRatios(
+  tx: Tx,
+  siteIds: readonly number[],
+  at: Date,
+): Promise<Map<number, number | null>> {
+  const asked = siteIds.filter((id) => (ratiosKept.get(id)?.untilMs ?? 0) <= at.getTime());
+  if (asked.length > 0) {
+    const { rows } = await tx.raw<{ rows: { siteId: number; ratio: number | null }[] }>(
+      `with rated as (
+         select sl.site_id, sum(m.vmp_ref * m.imp_ref)::float8 as watts
+         from slot sl join module_type m on m.id = sl.module_type_id
+         where sl.site_id = any (:asked) group by sl.site_id),
+       measured as (
+         select site_id, sum(ac_power)::float8 / 4 as wh, sum(poa_insolation)::float8 as insolation
+         from site_quarter
+         where site_id = any (:asked) and at >= :from and at < :at and poa_insolation is not null
+         group by site_id)
+       select r.site_id as "siteId",
+              case when insolation >= 5000 and watts > 0 then wh / watts / (insolation / 1000) end as ratio
+       from rated r left join measured using (site_id)`,
+      { asked: [...asked], at, from: new Date(at.getTime() - 30 * 86_400_000) },
+    );
+    const untilMs = at.getTime() + RATIO_KEPT_MS;
+    for (const id of asked)
+      ratiosKept.set(id, { untilMs, ratio: rows.find((r) => r.siteId === id)?.ratio ?? null });
+  }
+  return new Map(siteIds.map((id) => [id, ratiosKept.get(id)?.ratio ?? null]));
+}
