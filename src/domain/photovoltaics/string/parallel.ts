@@ -1,0 +1,54 @@
+import { fallingRoot } from '../root';
+import type { PowerPoint } from './curve';
+import { type SeriesString, powerPeaks } from './series';
+
+/** Strings in parallel on one input: they share a voltage, their currents add. */
+export interface ParallelStrings {
+  /** V at which no current leaves; strings may feed each other there. */
+  voc: number;
+  /** A at the inverter, at a common voltage in V. */
+  currentAt: (voltage: number) => number;
+  /** A of each string at a common voltage: below 0 where the others push current back through it. */
+  currentsAt: (voltage: number) => number[];
+  /** V at a sum of currents in A, 0 up to what flows at 0 V. */
+  voltageAt: (current: number) => number;
+  mpp: PowerPoint | null;
+}
+
+/**
+ * Series strings in parallel. Backfeed is as the strings allow it: none through a unit in shutdown, forward through the
+ * cells of plain modules. Blocking diodes and fuses are not modelled.
+ *
+ * @param strings those that conduct (an open one adds nothing and is left out by the caller)
+ * @throws RangeError for no string at all, or a voltage or current outside what they can give
+ */
+export function parallelStrings(strings: readonly SeriesString[]): ParallelStrings {
+  if (strings.length === 0) throw new RangeError('strings must hold at least one string');
+  const currentsAt = (voltage: number): number[] => strings.map((string) => string.currentAt(voltage));
+  const currentAt = (voltage: number): number =>
+    currentsAt(voltage).reduce((sum, current) => sum + current, 0);
+  const highest = Math.max(...strings.map((string) => string.voc));
+  const lowest = Math.min(0, ...strings.map((string) => string.voc));
+  const voc = strings.length === 1 ? highest : fallingRoot(currentAt, lowest, highest);
+  const atZero = currentAt(0);
+
+  const voltageAt = (current: number): number => {
+    if (!(current >= 0 && current <= atZero)) {
+      throw new RangeError(`current must be between 0 and ${atZero} A, but is ${current}`);
+    }
+    return current === 0 ? voc : fallingRoot((voltage) => currentAt(voltage) - current, 0, voc);
+  };
+
+  const bends = strings.flatMap((string) => [
+    string.voc,
+    ...string.corners.map((corner) => string.voltageAt(corner)),
+    // just above 0 A, where units in shutdown let the voltage step down
+    string.voltageAt(Number.MIN_VALUE),
+  ]);
+  const best = powerPeaks(
+    [...bends.filter((voltage) => voltage < voc), voc],
+    (voltage) => voltage * currentAt(voltage),
+  )[0];
+  const mpp = best ? { v: best.at, i: best.value / best.at, p: best.value } : null;
+  return { voc, currentAt, currentsAt, voltageAt, mpp };
+}
