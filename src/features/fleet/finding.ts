@@ -1,4 +1,4 @@
-import { concerned } from '../../components/causes/places';
+import { countInside, headingOf, WHAT_TO_DO } from '../../components/causes/finding';
 import { GRAVITY } from '../../components/causes/words';
 import { countAtStart, listed, number } from '../../drawings/numbers';
 import type { CauseNow, SiteNow } from '../../schemas/api/now';
@@ -7,54 +7,6 @@ export interface Finding {
   heading: string;
   sentence: string;
 }
-
-const word = (n: number): string => countAtStart(n).toLowerCase();
-const units = (n: number): string => (n === 1 ? 'unit' : 'units');
-
-/** "Two units", "One string", "Two units and one string". */
-function subject(of: { units: number; strings: number }): string {
-  const parts: string[] = [];
-  if (of.units > 0) parts.push(`${countAtStart(of.units)} ${units(of.units)}`);
-  if (of.strings > 0) {
-    const count = parts.length === 0 ? countAtStart(of.strings) : word(of.strings);
-    parts.push(`${count} ${of.strings === 1 ? 'string' : 'strings'}`);
-  }
-  return parts.join(' and ');
-}
-
-/** "at Kestrel Row School", "at two sites". */
-function place(causes: readonly CauseNow[]): string {
-  const names = new Map(causes.map((c) => [c.siteId, c.siteName]));
-  return names.size === 1 ? `at ${[...names.values()][0]}` : `at ${word(names.size)} sites`;
-}
-
-const total = (causes: readonly CauseNow[]) => concerned(causes.flatMap((c) => c.units));
-
-function headingOf(verdict: CauseNow['verdict'], causes: readonly CauseNow[]): string {
-  const of = total(causes);
-  const single = of.units + of.strings === 1;
-  const who = `${subject(of)} ${place(causes)}`;
-  switch (verdict) {
-    case 'not_shutting_down':
-      return `${who} did not shut down`;
-    case 'stuck':
-      return of.units === 0
-        ? `${who} ${single ? 'has' : 'have'} units stuck in shutdown`
-        : `${who} ${single ? 'is' : 'are'} stuck in shutdown`;
-    case 'unconfirmed':
-      return `The shutdown of ${lowerFirst(subject(of))} ${place(causes)} can't be confirmed`;
-    case 'silent':
-      return `${who} ${single ? 'is' : 'are'} silent`;
-  }
-}
-const lowerFirst = (text: string): string => text.charAt(0).toLowerCase() + text.slice(1);
-
-const WHAT_TO_DO: Record<CauseNow['verdict'], (at: string) => string> = {
-  not_shutting_down: (at) => `Treat every string ${at} as live and call the site.`,
-  stuck: (at) => `They hold back power ${at}; the causes below say which part they share.`,
-  unconfirmed: (at) => `Treat their strings ${at} as live until a rated meter shows otherwise.`,
-  silent: (at) => `Whether they follow a shutdown ${at} can't be confirmed until they are heard again.`,
-};
 
 const sum = (sites: readonly SiteNow[], of: (site: SiteNow) => number): number =>
   sites.reduce((all, site) => all + of(site), 0);
@@ -82,7 +34,7 @@ function standing(sites: readonly SiteNow[], told: CauseNow['verdict'] | null): 
   if (stuck > 0)
     parts.push(
       `${number(stuck)} ${stuck === 1 ? 'is' : 'are'} stuck in shutdown at ${
-        stuckAt.length === 1 ? stuckAt[0]?.name : `${word(stuckAt.length)} sites`
+        stuckAt.length === 1 ? stuckAt[0]?.name : `${countInside(stuckAt.length)} sites`
       }`,
     );
   if (unconfirmed > 0) parts.push(`${number(unconfirmed)} can't be confirmed`);
@@ -95,7 +47,7 @@ function standing(sites: readonly SiteNow[], told: CauseNow['verdict'] | null): 
     parts.push(
       `${listed(held.map((s) => s.name))} ${held.length === 1 ? 'is' : 'are'} in shutdown on purpose`,
     );
-  else if (held.length > 2) parts.push(`${word(held.length)} sites are in shutdown on purpose`);
+  else if (held.length > 2) parts.push(`${countInside(held.length)} sites are in shutdown on purpose`);
   const last = parts.pop() ?? '';
   return parts.length === 0 ? last : `${parts.join(', ')}${parts.length > 1 ? ', and ' : ' and '}${last}`;
 }

@@ -97,6 +97,7 @@ export async function signedInBy(cookieHeader: string): Promise<SignedIn | { coo
         email: person.email,
         role: person.role as Role,
         organisationName: person.organisationName,
+        timeZone: person.timeZone,
         theme: person.theme as Theme,
       },
     };

@@ -9,6 +9,8 @@ export interface Viewer {
   email: string;
   role: Role;
   organisationName: string;
+  /** Of the organisation: for times that belong to no site. */
+  timeZone: string;
   theme: Theme;
 }
 

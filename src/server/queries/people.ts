@@ -4,6 +4,7 @@ export interface PersonRow {
   id: number;
   organisationId: number;
   organisationName: string;
+  timeZone: string;
   email: string;
   name: string;
   role: string;
@@ -15,7 +16,7 @@ export interface PersonRow {
 export async function personOfSession(personId: number): Promise<PersonRow | undefined> {
   return asSignIn(async (tx) => {
     const { rows } = await tx.raw<{ rows: PersonRow[] }>(
-      `select p.id, p.organisation_id as "organisationId", o.name as "organisationName", p.email, p.name, p.role, p.theme,
+      `select p.id, p.organisation_id as "organisationId", o.name as "organisationName", o.time_zone as "timeZone", p.email, p.name, p.role, p.theme,
               coalesce((select array_agg(site_id) from site_access a where a.person_id = p.id), '{}') as sites
        from person p join organisation o on o.id = p.organisation_id
        where p.id = ? and p.active`,

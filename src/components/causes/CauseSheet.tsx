@@ -1,0 +1,98 @@
+import { energy, listed, percent } from '../../drawings/numbers';
+import { clockOrDate, fullTime, zoneName } from '../../drawings/times';
+import type { Acknowledgement, AcknowledgeReply, SiteContact } from '../../schemas/api/fleet';
+import type { CauseNow } from '../../schemas/api/now';
+import { paths } from '../../schemas/paths';
+import { StateTag } from '../states/StateTag';
+import { Tag } from '../ui/Tag';
+import { clocksDiffer, useReaderZone } from '../ui/reader-zone';
+import { Acknowledge } from './Acknowledge';
+import { placesInWords, placesOf, positionsInWords } from './places';
+import { isHazard, treatAsLive } from './words';
+
+interface Props {
+  cause: CauseNow;
+  timeZone: string;
+  now: string;
+  contact: SiteContact | undefined;
+  taken: Acknowledgement | undefined;
+  onTaken: (reply: AcknowledgeReply) => void;
+  /** The site is what the page is about: it isn't named again. */
+  ofThisSite?: boolean;
+}
+
+export function CauseTag({ verdict }: Pick<CauseNow, 'verdict'>) {
+  if (verdict === 'silent')
+    return (
+      <Tag tone="slate" shape="▨">
+        Silent
+      </Tag>
+    );
+  return <StateTag state={null} verdict={verdict} />;
+}
+
+/** Strings as links while they are few, else in words. */
+function Where({ cause }: { cause: CauseNow }) {
+  const places = placesOf(cause.units);
+  if (places.length === 0 || places.length > 3) return <>{placesInWords(cause.units)}</>;
+  return (
+    <>
+      {places.map((place, i) => (
+        <span key={place.stringId}>
+          {i > 0 && '; '}
+          <a href={paths.string(cause.siteId, place.stringId)}>string {place.stringName}</a>,{' '}
+          {positionsInWords(place.positions)}
+        </span>
+      ))}
+    </>
+  );
+}
+
+/** One cause to act on, as a sheet: what, where, what it rests on, since when, and what it costs. */
+export function CauseSheet({ cause, timeZone, now, contact, taken, onTaken, ofThisSite = false }: Props) {
+  const readerZone = useReaderZone();
+  const live = treatAsLive(cause);
+  const zone = clocksDiffer(cause.since, timeZone, readerZone) ? ` ${zoneName(cause.since, timeZone)}` : '';
+  const facts = [
+    cause.lossWhPerDay !== null && cause.lossWhPerDay > 0 ? `losing ${energy(cause.lossWhPerDay)} a day` : '',
+    cause.confidence < 0.9 ? `${percent(cause.confidence)} sure` : '',
+  ].filter(Boolean);
+  return (
+    <article className="flex min-w-0 flex-col border-b border-t-2 border-b-rule border-t-ink bg-sheet px-[18px] py-4">
+      <div>
+        <CauseTag verdict={cause.verdict} />
+      </div>
+      <h3 className="mt-2.5 text-[17px] leading-6">{cause.headline}</h3>
+      <p className="mt-1 text-[15px] leading-[22px] text-ink-2">
+        {!ofThisSite && (
+          <>
+            <a href={paths.site(cause.siteId)}>{cause.siteName}</a>,{' '}
+          </>
+        )}
+        <Where cause={cause} />. {cause.evidence}
+        {live && <strong className="font-semibold text-ink"> {live}</strong>}
+      </p>
+      <p className="mt-2 text-sm text-ink-2">
+        since{' '}
+        <time dateTime={cause.since} title={fullTime(cause.since, timeZone)}>
+          {clockOrDate(cause.since, now, timeZone)}
+          {zone}
+        </time>
+        {facts.length > 0 && ` · ${facts.join(' · ')}`}
+      </p>
+      {cause.alternatives.length > 0 && (
+        <p className="mt-1 text-sm text-ink-2">It could also be: {listed(cause.alternatives)}.</p>
+      )}
+      {isHazard(cause) && (
+        <Acknowledge
+          cause={cause}
+          contact={contact}
+          taken={taken}
+          now={now}
+          timeZone={timeZone}
+          onTaken={onTaken}
+        />
+      )}
+    </article>
+  );
+}

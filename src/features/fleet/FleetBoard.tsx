@@ -1,0 +1,132 @@
+import { useQuery } from '@tanstack/react-query';
+import { useMemo } from 'react';
+import { CauseSheet } from '../../components/causes/CauseSheet';
+import { byGravity } from '../../components/causes/words';
+import { Button } from '../../components/ui/Button';
+import { Heading } from '../../components/ui/Heading';
+import { LiveMark } from '../../components/ui/Live';
+import { Notice } from '../../components/ui/Notice';
+import { Sheet } from '../../components/ui/Sheet';
+import { useNow } from '../../components/ui/Time';
+import { useReaderZone } from '../../components/ui/reader-zone';
+import { number } from '../../drawings/numbers';
+import { useLive } from '../../lib/live-hook';
+import { queryClient } from '../../lib/query-client';
+import { useViewInUrl } from '../../lib/view-in-url';
+import type { AcknowledgeReply, FleetNow, FleetView, SinceLastLook as Missed } from '../../schemas/api/fleet';
+import { FleetFilters } from './FleetFilters';
+import { FleetTable } from './FleetTable';
+import { SinceLastLook } from './SinceLastLook';
+import { fleetFinding } from './finding';
+import { fleetLines } from './list';
+import { changedFleet, fleetKey, fleetQuery, withAcknowledgement } from './query';
+import { FLEET_DEFAULTS, sortInWords } from './view';
+
+interface Props {
+  initial: FleetNow;
+  view: FleetView;
+  missed: Missed | null;
+  /** Of the organisation: for times that belong to no site, until the reader's own is known. */
+  timeZone: string;
+}
+
+/** The fleet: what is found, what to act on, every site by need. Server-rendered, then live. */
+export function FleetBoard({ initial, view: initialView, missed, timeZone }: Props) {
+  const client = queryClient();
+  const { data: fleet, error, refetch } = useQuery(fleetQuery(initial), client);
+  const status = useLive('fleet', (change) => {
+    client.setQueryData<FleetNow>(fleetKey, (old) =>
+      changedFleet(old ?? initial, change, new Date().toISOString()),
+    );
+    // a cause at a site whose telephone number or acknowledgement is not here yet
+    if (change.causes) void client.invalidateQueries({ queryKey: fleetKey });
+  });
+  const [view, change] = useViewInUrl(initialView, FLEET_DEFAULTS);
+  const now = useNow(initial.at);
+  const readerZone = useReaderZone() ?? timeZone;
+
+  const finding = useMemo(() => fleetFinding(fleet.sites, fleet.causes), [fleet.sites, fleet.causes]);
+  const lines = useMemo(() => fleetLines(fleet.sites, fleet.causes, view), [fleet.sites, fleet.causes, view]);
+  const causes = useMemo(() => [...fleet.causes].sort(byGravity), [fleet.causes]);
+  const zones = useMemo(() => new Map(fleet.sites.map((s) => [s.id, s.timeZone])), [fleet.sites]);
+  const taken = (reply: AcknowledgeReply) =>
+    client.setQueryData<FleetNow>(fleetKey, (old) => withAcknowledgement(old ?? initial, reply));
+
+  return (
+    <>
+      <Heading
+        finding={finding.heading}
+        sentence={finding.sentence}
+        actions={
+          <LiveMark
+            lostSince={!status.live && status.since ? status.since.toISOString() : null}
+            timeZone={readerZone}
+          />
+        }
+      />
+      <p className="sr-only" role="status">
+        {finding.heading}
+      </p>
+      {error && (
+        <div className="mb-6">
+          <Notice
+            kind="failed"
+            title="The fleet could not be read anew"
+            action={<Button onClick={() => void refetch()}>Try again</Button>}
+          >
+            {error.message} What is shown may be old.
+          </Notice>
+        </div>
+      )}
+      {missed && missed.items.length > 0 && (
+        <SinceLastLook missed={missed} now={initial.at} timeZone={readerZone} />
+      )}
+      {causes.length > 0 && (
+        <section aria-labelledby="causes" className="mb-8">
+          <h2 id="causes" className="mb-2.5 text-[15px] leading-5 tracking-[-0.01em]">
+            Causes to act on
+          </h2>
+          <div className="grid items-stretch gap-4 md:grid-cols-2 xl:grid-cols-3">
+            {causes.map((cause) => (
+              <CauseSheet
+                key={cause.key}
+                cause={cause}
+                timeZone={zones.get(cause.siteId) ?? timeZone}
+                now={now.toISOString()}
+                contact={fleet.contacts.find((c) => c.siteId === cause.siteId)}
+                taken={fleet.acknowledgements.find((a) => a.key === cause.key)}
+                onTaken={taken}
+              />
+            ))}
+          </div>
+        </section>
+      )}
+      {fleet.sites.length === 0 ? (
+        <Notice kind="empty" title="No site yet">
+          A manager enters the first plant; its units, strings and states then stand here.
+        </Notice>
+      ) : (
+        <section aria-labelledby="sites">
+          <div className="mb-2.5 flex flex-wrap items-baseline justify-between gap-x-4">
+            <h2 id="sites" className="text-[15px] leading-5 tracking-[-0.01em]">
+              Sites
+            </h2>
+            <p className="text-sm text-ink-2" role="status">
+              {sortInWords(view)} · {number(lines.length)} of {number(fleet.sites.length)}
+            </p>
+          </div>
+          <Sheet flush>
+            <FleetFilters view={view} onChange={change} />
+            <FleetTable
+              lines={lines}
+              view={view}
+              now={now}
+              onChange={change}
+              onClear={() => change({ q: '', stage: 'any', show: 'all' })}
+            />
+          </Sheet>
+        </section>
+      )}
+    </>
+  );
+}

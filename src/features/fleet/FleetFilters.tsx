@@ -1,0 +1,48 @@
+import { ButtonLink } from '../../components/ui/Button';
+import { Segmented } from '../../components/ui/Segmented';
+import { withQuery } from '../../lib/api';
+import type { FleetView } from '../../schemas/api/fleet';
+import { paths } from '../../schemas/paths';
+import { SHOWS, STAGES } from './view';
+
+interface Props {
+  view: FleetView;
+  onChange: (some: Partial<FleetView>, how?: 'typed' | 'chosen') => void;
+}
+
+/** Search, filters and the download of the fleet's table. Without scripts the form does the same by the address. */
+export function FleetFilters({ view, onChange }: Props) {
+  return (
+    <form
+      action={paths.fleet()}
+      className="no-print mb-3 flex flex-wrap items-center gap-x-5 gap-y-2"
+      onSubmit={(event) => event.preventDefault()}
+    >
+      <input
+        type="search"
+        name="q"
+        aria-label="Filter sites by name or place"
+        placeholder="Filter by name or place"
+        autoComplete="off"
+        value={view.q}
+        onChange={(event) => onChange({ q: event.target.value }, 'typed')}
+        className="target w-full rounded border border-rule bg-sheet px-2.5 text-[15px] placeholder:text-ink-3 sm:w-[220px]"
+      />
+      <Segmented
+        label="Which sites"
+        options={SHOWS}
+        value={view.show}
+        onChange={(show) => onChange({ show })}
+      />
+      <Segmented
+        label="Stage"
+        options={STAGES}
+        value={view.stage}
+        onChange={(stage) => onChange({ stage })}
+      />
+      <ButtonLink href={withQuery(paths.api.fleetCsv(), view)} download className="ml-auto !text-sm">
+        CSV
+      </ButtonLink>
+    </form>
+  );
+}

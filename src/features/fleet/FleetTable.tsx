@@ -1,0 +1,116 @@
+import { Notice } from '../../components/ui/Notice';
+import { Table, type Column } from '../../components/ui/Table';
+import { Button } from '../../components/ui/Button';
+import { MixBar } from '../../drawings/MixBar';
+import { number, percent, power } from '../../drawings/numbers';
+import type { FleetView } from '../../schemas/api/fleet';
+import { paths } from '../../schemas/paths';
+import type { FleetLine } from './list';
+import { openAt } from './need';
+import { readsFromA } from './view';
+
+const STAGE = { commissioning: 'Commissioning', operating: 'Operating' } as const;
+
+function Open({ line, now }: { line: FleetLine; now: Date }) {
+  const words = openAt(line.site, line.causes, now);
+  return <span className={words === 'nothing' ? 'text-ink-2' : ''}>{words}</span>;
+}
+
+const columns = (now: Date): Column<FleetLine>[] => [
+  {
+    key: 'name',
+    label: 'Site',
+    sortable: true,
+    cell: (line) => (
+      <>
+        <a
+          href={paths.site(line.site.id)}
+          className="target inline-flex items-center text-[15px] font-semibold tracking-[-0.01em] hover:underline"
+        >
+          {line.site.name}
+        </a>
+        <div className="mt-0.5 space-y-1.5 sm:hidden">
+          <MixBar id={`narrow-${line.site.id}`} counts={line.site.counts} width={190} />
+          <p className="text-sm text-ink-2">
+            {STAGE[line.site.stage]}, {number(line.site.counts.units)} units
+          </p>
+          <p className="text-sm">
+            <Open line={line} now={now} />
+          </p>
+        </div>
+      </>
+    ),
+  },
+  {
+    key: 'stage',
+    label: 'Stage',
+    sortable: true,
+    from: 'lg',
+    cell: (line) => <span className="text-ink-2">{STAGE[line.site.stage]}</span>,
+  },
+  {
+    key: 'units',
+    label: 'Units',
+    sortable: true,
+    from: 'sm',
+    cell: (line) => (
+      <div className="flex items-center justify-between gap-4">
+        <MixBar id={`wide-${line.site.id}`} counts={line.site.counts} />
+        <span>{number(line.site.counts.units)}</span>
+      </div>
+    ),
+  },
+  { key: 'need', label: 'Open', sortable: true, from: 'sm', cell: (line) => <Open line={line} now={now} /> },
+  {
+    key: 'ratio',
+    label: 'Performance ratio, 30 d',
+    numeric: true,
+    sortable: true,
+    from: 'md',
+    cell: (line) => percent(line.site.performanceRatio30d, 1),
+  },
+  {
+    key: 'power',
+    label: 'Now',
+    numeric: true,
+    sortable: true,
+    className: 'max-sm:align-top max-sm:pt-[18px]',
+    cell: (line) => power(line.site.power),
+  },
+];
+
+interface Props {
+  lines: readonly FleetLine[];
+  view: FleetView;
+  now: Date;
+  onChange: (some: Partial<FleetView>) => void;
+  onClear: () => void;
+}
+
+export function FleetTable({ lines, view, now, onChange, onClear }: Props) {
+  const ascending = readsFromA(view.sort) ? view.order === 'down' : view.order === 'up';
+  return (
+    <Table
+      caption="Sites with their units by state, what is open, performance ratio and power now"
+      columns={columns(now)}
+      rows={lines}
+      rowKey={(line) => line.site.id}
+      sorting={{ key: view.sort, descending: !ascending }}
+      onSort={({ key }) => {
+        const sort = key as FleetView['sort'];
+        onChange({ sort, order: sort === view.sort && view.order === 'down' ? 'up' : 'down' });
+      }}
+      empty={
+        <div className="py-3">
+          <Notice
+            kind="empty"
+            title="No site matches"
+            action={<Button onClick={onClear}>Show all sites</Button>}
+          >
+            Another word, stage or filter may.
+          </Notice>
+        </div>
+      }
+    />
+  );
+}

@@ -1,0 +1,18 @@
+/**
+ * A list with what has come in: entries of the same key replaced in place, new ones added at the end. The list
+ * itself comes back when nothing came, so that nothing is drawn again.
+ */
+export function replaced<T>(
+  list: T[],
+  incoming: readonly T[] | undefined,
+  keyOf: (entry: T) => string | number,
+): T[] {
+  if (!incoming || incoming.length === 0) return list;
+  const news = new Map(incoming.map((entry) => [keyOf(entry), entry]));
+  const kept = list.map((entry) => {
+    const fresh = news.get(keyOf(entry));
+    if (fresh !== undefined) news.delete(keyOf(entry));
+    return fresh ?? entry;
+  });
+  return news.size > 0 ? [...kept, ...news.values()] : kept;
+}

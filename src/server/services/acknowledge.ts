@@ -1,0 +1,64 @@
+import type { Actor } from '../../domain/access/permissions';
+import type { AcknowledgeReply } from '../../schemas/api/fleet';
+import type { Tx } from '../db/transaction';
+import { AppError } from '../errors';
+import { acknowledgementsOf, addAcknowledgement, contactsOf } from '../queries/fleet';
+import { tellSiteChanged } from '../queries/live-notices';
+import { addAuditEntry } from '../queries/people';
+import { visibleSite } from '../queries/visible-site';
+import { causesNow } from './causes';
+
+export interface AcknowledgeCall {
+  site: string;
+  key: string;
+  /** The name that is put to it. */
+  person: string;
+  address: string | null;
+}
+
+/**
+ * Puts a person's name to a cause that holds now: an event of the site and an audit entry, neither of which is ever
+ * changed. Who has it already keeps it; the second person is told so by name.
+ * @throws AppError not_found for a site that the actor may not see, conflict when the cause has ended
+ */
+export async function acknowledge(
+  tx: Tx,
+  actor: Actor,
+  call: AcknowledgeCall,
+  at: Date,
+): Promise<AcknowledgeReply> {
+  const site = await visibleSite(tx, call.site);
+  if (!site)
+    throw new AppError('not_found', { message: 'No such site. Check the link, or go back to the fleet.' });
+  const cause = (await causesNow(tx, at, [site.id])).find((c) => c.key === call.key);
+  if (!cause)
+    throw new AppError('conflict', {
+      message: 'This has ended or changed meanwhile. Load the page again to see how it stands.',
+    });
+  const contact = (await contactsOf(tx, [site.id]))[0];
+  if (!contact)
+    throw new AppError('not_found', { message: 'No such site. Check the link, or go back to the fleet.' });
+  const already = (await acknowledgementsOf(tx, [cause.key]))[0];
+  if (already) return { acknowledgement: already, contact };
+
+  await addAcknowledgement(tx, {
+    siteId: site.id,
+    at,
+    key: cause.key,
+    headline: cause.headline,
+    person: call.person,
+  });
+  await addAuditEntry(tx, {
+    organisationId: actor.organisationId,
+    personId: actor.personId,
+    address: call.address,
+    action: 'hazard.acknowledge',
+    subject: `site ${site.ref}`,
+    after: { key: cause.key, headline: cause.headline, person: call.person },
+  });
+  await tellSiteChanged(tx, site.id);
+  return {
+    acknowledgement: { key: cause.key, siteId: site.ref, at: at.toISOString(), person: call.person },
+    contact,
+  };
+}

@@ -1,0 +1,41 @@
+import type { FleetNow, SinceLastLook } from '../../schemas/api/fleet';
+import type { ShutdownNow } from '../../schemas/api/shutdown';
+import type { Tx } from '../db/transaction';
+import { acknowledgementsOf, contactsOf, missedSince, noteLook } from '../queries/fleet';
+import { sitesNow } from '../queries/sites-now';
+import { causesNow } from './causes';
+
+/** Every site that the actor sees, as it stands, with what to act on. A fixed number of statements. */
+export async function readFleet(tx: Tx, at: Date): Promise<FleetNow> {
+  const sites = await sitesNow(tx, at);
+  const causes = await causesNow(tx, at);
+  return {
+    at: at.toISOString(),
+    sites,
+    causes,
+    contacts: await contactsOf(tx),
+    acknowledgements: await acknowledgementsOf(
+      tx,
+      causes.map((c) => c.key),
+    ),
+  };
+}
+
+/** The part of the fleet that shutdown is about: sites with a cause, or with something other than a release in force. */
+export async function readShutdown(tx: Tx, at: Date): Promise<ShutdownNow> {
+  const fleet = await readFleet(tx, at);
+  const concerned = new Set(fleet.causes.map((c) => c.siteId));
+  const sites = fleet.sites.filter((s) => concerned.has(s.id) || s.commands.length > 0);
+  const shown = new Set(sites.map((s) => s.id));
+  return { ...fleet, sites, contacts: fleet.contacts.filter((c) => shown.has(c.siteId)) };
+}
+
+/** So many lines fit before the causes without pushing them off a laptop's screen. */
+const MISSED_MAX = 6;
+
+/** Notes the look, and tells what happened since the visit before; null on a first visit. */
+export async function lookAtFleet(tx: Tx, personId: number, at: Date): Promise<SinceLastLook | null> {
+  const before = await noteLook(tx, personId, at);
+  if (!before) return null;
+  return { since: before.toISOString(), ...(await missedSince(tx, before, MISSED_MAX)) };
+}
