@@ -3,7 +3,7 @@ import path from 'node:path';
 import process from 'node:process';
 import { setTimeout as sleep } from 'node:timers/promises';
 import { tell } from './guard-line.mjs';
-import { makeHome, readState, writeState } from './home.mjs';
+import { isStateKept, makeHome, readState, writeState } from './home.mjs';
 import { locked } from './lock.mjs';
 import { bornAt, freePort, isAlive, processesIn, run } from './processes.mjs';
 import { ensurePostgres, postgresPrograms, serverAccount } from './programs.mjs';
@@ -139,7 +139,7 @@ async function launchServer(home, state, durable) {
   const account = serverAccount();
   fs.closeSync(fs.openSync(log, 'a', 0o600));
   if (account) fs.chownSync(log, account.uid, account.gid);
-  if (!fs.existsSync(path.join(home, 'state.json'))) {
+  if (!isStateKept(home)) {
     if (postmasterOf(home)?.ours) await stopServer(home);
     await setPassword(home, bin, state);
     writeState(home, state);

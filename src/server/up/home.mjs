@@ -34,14 +34,19 @@ export const secret = () => randomBytes(18).toString('base64url');
 
 const stateFile = (home) => path.join(home, 'state.json');
 
+function keptState(home) {
+  try {
+    return JSON.parse(fs.readFileSync(stateFile(home), 'utf8'));
+  } catch {
+    return {}; // none yet, or cut short: passwords are set anew where they no longer fit
+  }
+}
+
+/** Whether the home still knows its passwords. */
+export const isStateKept = (home) => keptState(home).superPassword !== undefined;
+
 /** What a home remembers: port, passwords, the demo's secret, how far the seed got. Missing parts are made. */
 export function readState(home) {
-  let kept = {};
-  try {
-    kept = JSON.parse(fs.readFileSync(stateFile(home), 'utf8'));
-  } catch {
-    // none yet, or cut short: passwords are set anew where they no longer fit
-  }
   return {
     port: FIRST_PORT,
     superPassword: secret(),
@@ -49,7 +54,7 @@ export function readState(home) {
     rolesSecret: secret(),
     demoSecret: secret(),
     seed: 'none',
-    ...kept,
+    ...keptState(home),
   };
 }
 

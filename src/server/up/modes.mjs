@@ -48,6 +48,7 @@ function endWithNpm(end) {
 /** @returns exit code */
 export async function bringUp(mode, args) {
   startGuard();
+  for (const stream of [process.stdout, process.stderr]) stream.on('error', () => undefined); // nobody reads any more
   let signalled;
   const interrupted = new Promise((resolve) => {
     signalled = (signal) => () => resolve({ signal });

@@ -1,6 +1,7 @@
 import path from 'node:path';
 import process from 'node:process';
 import { buildIfStale } from './build.mjs';
+import { postmasterOf, startCluster } from './cluster.mjs';
 import { homeOf, makeHome } from './home.mjs';
 import { dropLock, holderOf, takeLock } from './lock.mjs';
 import { root } from './place.mjs';
@@ -94,23 +95,62 @@ async function answers(url, died) {
   throw new Stop(`${url} does not answer.`, 'See the lines above for why.');
 }
 
+const SIMULATOR_TRIES = 5;
+
+/** The simulator runs along; one that falls is started again, so that the site in view stays. Resolves when that is given up. */
 function launchSimulator(env, { reach, simulatorPort, secret }, atEnd) {
-  const simulator = launch(process.execPath, ['--import', 'tsx', 'simulator/main.ts'], {
-    cwd: root,
-    env: {
-      ...env,
-      DATABASE_URL: '', // it knows the plant by its own plan, and has no business in the database
-      DATABASE_URL_APP: '',
-      DATABASE_URL_INGEST: '',
-      WAKELINE_INGEST_URL: `ws://${reach}/ingest/v1`,
-      WAKELINE_DEMO_SECRET: secret,
-      WAKELINE_URL: `http://${reach}/`,
-      SIMULATOR_PORT: String(simulatorPort),
-    },
+  let simulator;
+  let ending = false;
+  atEnd(() => {
+    ending = true;
+    return end(simulator);
   });
-  show(simulator, 'simulator');
-  atEnd(() => end(simulator));
-  return endOf(simulator, 'The simulator');
+  return new Promise((resolve) => {
+    const begin = (attempt) => {
+      simulator = launch(process.execPath, ['--import', 'tsx', 'simulator/main.ts'], {
+        cwd: root,
+        env: {
+          ...env,
+          DATABASE_URL: '', // it knows the plant by its own plan, and has no business in the database
+          DATABASE_URL_APP: '',
+          DATABASE_URL_INGEST: '',
+          WAKELINE_INGEST_URL: `ws://${reach}/ingest/v1`,
+          WAKELINE_DEMO_SECRET: secret,
+          WAKELINE_URL: `http://${reach}/`,
+          SIMULATOR_PORT: String(simulatorPort),
+        },
+      });
+      show(simulator, 'simulator');
+      void endOf(simulator, 'The simulator').then((how) => {
+        if (ending) return;
+        if (attempt === SIMULATOR_TRIES) return resolve(how);
+        say(`the simulator has ended (${how.signal ?? `exit ${how.code}`}): starting it again`);
+        setTimeout(() => ending || begin(attempt + 1), 2000);
+      });
+    };
+    begin(1);
+  });
+}
+
+/** A database server that was killed is started again; the site finds it by itself. Rejects where that fails. */
+function watchDatabase(stage, atEnd) {
+  if (!stage.own) return new Promise(() => undefined);
+  return new Promise((_, reject) => {
+    let busy = false;
+    const timer = setInterval(() => {
+      if (busy || postmasterOf(stage.home)?.ours) return;
+      busy = true;
+      say('PostgreSQL has ended: starting it again');
+      startCluster(stage.home)
+        .then(({ state }) => {
+          if (state.port !== stage.state.port)
+            throw new Stop(`PostgreSQL came back on another port (${state.port}).`, 'Start again.');
+          busy = false;
+        })
+        .catch(reject);
+    }, 2000);
+    atEnd(() => Promise.resolve(clearInterval(timer)));
+  });
 }
 
 const SIGN_INS = [
@@ -168,7 +208,7 @@ async function bringUpDemo(args, atEnd, launchSite) {
     parts.push(launchSimulator(env, { reach, simulatorPort, secret: stage.state.demoSecret }, atEnd));
   if (await answers(`${address}sign-in`, siteEnded))
     welcome(address, stage.hasDemo ? simulatorPort : undefined, elapsedS());
-  const { name, code, signal } = await Promise.race(parts);
+  const { name, code, signal } = await Promise.race([...parts, watchDatabase(stage, atEnd)]);
   throw new Stop(
     `${name} ended by itself (${signal ?? `exit ${code}`}).`,
     'See the lines above for why; everything is taken down.',
