@@ -154,6 +154,8 @@ export interface ObstaclePlan {
 export interface PresetFault {
   fault: Fault;
   sinceS: number;
+  /** Seconds before the fleet's `since` at which it ended; absent: it has not. */
+  untilS?: number;
 }
 
 /** Units of a site, empty slots left out. */

@@ -149,7 +149,7 @@ export function layOut(
     const total = power.reduce((a, b) => a + b, 0);
     return {
       name: `Inverter ${i + 1}`,
-      acPowerMax: Math.max(1000, Math.round(total / (spec.oversizing ?? 1.2) / 500) * 500),
+      acPowerMax: Math.max(1000, Math.round(total / (spec.oversizing ?? 1.1) / 500) * 500),
       inputs: power.map((_power, n) => n + 1),
     };
   });

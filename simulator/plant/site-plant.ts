@@ -1,0 +1,211 @@
+import type { ModuleType } from '../../src/domain/equipment/module-type';
+import type { UnitType } from '../../src/domain/equipment/unit-type';
+import { keyOf, mix, uniform } from '../chance';
+import { FaultBook, ofKind } from '../faults/book';
+import type { Fault } from '../faults/kinds';
+import { planeLight, type PlaneLight } from '../weather/plane-light';
+import { Sky, type SkyNow } from '../weather/sky';
+import { Commands } from './commands';
+import { setLight } from './curve';
+import { InputPlant } from './input-plant';
+import { InverterPlant } from './inverter-plant';
+import type { SitePlan } from './plan';
+import { setShade } from './shade';
+import { PASSING, StringPlant } from './string-plant';
+import { moveUnits, moving, unitFaultsOf, type UnitFaults } from './units';
+
+/** Where a serial really sits. */
+export interface Seat {
+  string: StringPlant;
+  index: number;
+}
+
+/** Seconds in which a roof's modules take two thirds of a step in temperature. */
+const WARM_UP_S = 420;
+const DAY_S = 86_400;
+
+/** A site as it really is. `step` moves it on; everything else reads it. */
+export class SitePlant {
+  readonly strings: StringPlant[];
+  readonly byName = new Map<string, StringPlant>();
+  readonly inverters: InverterPlant[];
+  readonly inputs: InputPlant[];
+  readonly commands: Commands;
+  readonly faults = new FaultBook();
+  readonly heard = new Set<string>();
+  readonly sky: Sky;
+  now: SkyNow;
+  /** W/m² in each plane at the middle of the site, as a sensor there sees it. */
+  readonly poaGlobal = new Map<string, number>();
+  /** °C of the cells of each string. */
+  readonly cells = new Map<StringPlant, number>();
+  atS: number;
+
+  private seats = new Map<string, Seat>();
+  private known: { faults: Fault[]; byString: Map<StringPlant, UnitFaults> } | null = null;
+  private readonly resistances: number[];
+  private readonly dirt: number[];
+  private fresh = true;
+
+  constructor(
+    readonly plan: SitePlan,
+    types: { modules: readonly ModuleType[]; units: readonly UnitType[] },
+    readonly seed: number,
+    since: number,
+    /** Epoch seconds from which the site is looked at. */
+    fromS: number,
+  ) {
+    this.strings = plan.strings.map((s) => new StringPlant(s, plan.key, seed, types));
+    for (const s of this.strings) this.byName.set(s.plan.name, s);
+    this.resistances = this.strings.map((s) => s.resistance);
+    this.dirt = this.strings.map((s) => 1 - 0.012 * uniform(s.key, 77));
+    this.inputs = plan.inverters.flatMap((inverter) =>
+      inverter.inputs.map(
+        (number) =>
+          new InputPlant(
+            inverter.name,
+            number,
+            this.strings.filter((s) => s.plan.inverter === inverter.name && s.plan.input === number),
+          ),
+      ),
+    );
+    this.inverters = plan.inverters.map(
+      (i) =>
+        new InverterPlant(
+          i,
+          this.inputs.filter((input) => input.inverter === i.name),
+          mix(keyOf(plan.key), keyOf(i.name)),
+        ),
+    );
+    this.sky = new Sky(plan, seed, since);
+    this.commands = new Commands(plan, fromS);
+    this.atS = fromS;
+    this.now = this.sky.at(fromS);
+    plan.faults.forEach((f, i) => {
+      const until = f.untilS === undefined ? null : since - f.untilS;
+      this.faults.add(f.fault, since - f.sinceS, until, `P${i + 1}`);
+    });
+    if (plan.stage === 'operating')
+      for (const s of plan.strings)
+        for (const slot of s.slots) if (slot.serial !== null) this.heard.add(slot.serial);
+  }
+
+  seatOf(serial: string): Seat | undefined {
+    return this.seats.get(serial);
+  }
+
+  /** What a unit says of itself when that is not the truth: a claim's code on the wire. */
+  claimOf(s: StringPlant, index: number): number | null {
+    const claims = this.known?.byString.get(s)?.keepsPassing.get(index);
+    if (claims !== 'shutdown' || s.mode[index] !== PASSING) return null;
+    return this.commands.released(s.plan.zone) ? null : 2;
+  }
+
+  /** Units are on their way somewhere, or an inverter is: worth a look each second. */
+  get moving(): boolean {
+    return this.strings.some(moving) || this.inverters.some((i) => i.starting);
+  }
+
+  /** Moves the site on to `atS` (not before the last step). Returns whether any unit changed its mode. */
+  step(atS: number): boolean {
+    const faults = this.faults.at(atS);
+    if (this.known?.faults !== faults) this.learn(faults);
+    this.commands.refresh(faults, atS);
+    this.now = this.sky.at(atS);
+    const elapsed = this.fresh ? Infinity : atS - this.atS;
+    this.atS = atS;
+    this.shine(faults, elapsed);
+    let changed = false;
+    const heard = (serial: string) => this.heard.has(serial);
+    for (const s of this.strings) {
+      const mine = this.known?.byString.get(s);
+      if (mine && moveUnits(s, atS, this.commands, mine, heard)) changed = true;
+    }
+    if (this.fresh) this.settleUnits(atS, heard);
+    this.fresh = false;
+    for (const inverter of this.inverters) inverter.step(atS, faults, this.now.temperatureAir);
+    return changed;
+  }
+
+  /** At the first look everything has long been where it is going. */
+  private settleUnits(atS: number, heard: (serial: string) => boolean): void {
+    for (const s of this.strings) {
+      const mine = this.known?.byString.get(s);
+      if (!mine) continue;
+      moveUnits(s, atS, this.commands, mine, heard);
+      moveUnits(s, atS + 3600, this.commands, mine, heard);
+      s.pendingAtS.fill(NaN);
+    }
+  }
+
+  private shine(faults: readonly Fault[], elapsed: number): void {
+    const { now, plan } = this;
+    const snow = ofKind(faults, 'snow');
+    const covered = (plane: string) => snow.some((f) => f.plane === undefined || f.plane === plane);
+    const kept = 1 - this.sky.soiling(now.atS);
+    const light = new Map<string, PlaneLight>();
+    const middle = plan.outline[2] ?? [30, 30];
+    for (const p of plan.planes) {
+      const l = planeLight(now, p);
+      light.set(p.name, l);
+      const through = this.sky.beamThrough(now, middle[0] / 2, middle[1] / 2);
+      this.poaGlobal.set(p.name, covered(p.name) ? 0 : l.beam * through + l.diffuse);
+    }
+    const solarHour = ((((now.atS + plan.longitude * 240) % DAY_S) + DAY_S) % DAY_S) / 3600;
+    // A mounted module runs above the air by what it takes in over what the wind carries off.
+    const rise = 0.034 / (1 + 0.09 * Math.max(0, now.windSpeed - 1));
+    const share = 1 - Math.exp(-elapsed / WARM_UP_S);
+    this.strings.forEach((s, k) => {
+      const l = light.get(s.plan.plane);
+      if (!l) return;
+      const snowed = covered(s.plan.plane);
+      const beam = snowed ? 0 : l.beam * this.sky.beamThrough(now, s.centreX, s.centreY);
+      const diffuse = snowed ? 0 : l.diffuse;
+      const aim = now.temperatureAir + rise * (beam + diffuse) - (now.elevation < 0 ? 2 : 0);
+      const before = this.cells.get(s) ?? aim;
+      const cell = before + (aim - before) * share;
+      this.cells.set(s, cell);
+      setShade(s, now, plan.obstacles, faults, beam / Math.max(1, beam + diffuse), solarHour);
+      setLight(s, beam, diffuse, kept * (this.dirt[k] ?? 1) * (this.soiled.get(s) ?? 1), cell);
+    });
+  }
+
+  private readonly soiled = new Map<StringPlant, number>();
+
+  /** What the faults in force change in the plant itself. */
+  private learn(faults: Fault[]): void {
+    this.known = { faults, byString: new Map(this.strings.map((s) => [s, unitFaultsOf(s, faults)])) };
+    this.strings.forEach((s, k) => {
+      const name = s.plan.name;
+      s.shortedGroups.fill(0);
+      for (const f of ofKind(faults, 'bypass_diode'))
+        if (f.string === name && f.position <= s.size) s.shortedGroups[f.position - 1] = f.groups;
+      s.resistance = this.resistances[k] ?? s.resistance;
+      for (const f of ofKind(faults, 'connector')) if (f.string === name) s.resistance += f.ohm;
+      this.soiled.set(s, 1);
+      for (const f of ofKind(faults, 'soiling')) if (f.string === name) this.soiled.set(s, 1 - f.share);
+      if (!ofKind(faults, 'shade').some((f) => f.string === name)) {
+        s.shadedGroups.fill(0);
+        s.shadeLoss.fill(0);
+      }
+    });
+    this.seats = new Map();
+    for (const s of this.strings)
+      s.plan.slots.forEach((slot, index) => {
+        if (slot.serial !== null) this.seats.set(slot.serial, { string: s, index });
+      });
+    for (const f of ofKind(faults, 'wrong_string')) this.swap(f);
+  }
+
+  private swap(f: Extract<Fault, { kind: 'wrong_string' }>): void {
+    const serialAt = (string: string, position: number) =>
+      this.byName.get(string)?.plan.slots[position - 1]?.serial ?? '';
+    const one = serialAt(f.string, f.position);
+    const other = serialAt(f.otherString, f.otherPosition);
+    const seat = this.seats.get(one);
+    const otherSeat = this.seats.get(other);
+    if (!seat || !otherSeat) return;
+    this.seats.set(one, otherSeat);
+    this.seats.set(other, seat);
+  }
+}
