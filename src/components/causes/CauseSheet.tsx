@@ -1,3 +1,4 @@
+import type { ReactNode } from 'react';
 import { energy, listed, percent } from '../../drawings/numbers';
 import { clockOrDate, fullTime, zoneName } from '../../drawings/times';
 import type { Acknowledgement, AcknowledgeReply, SiteContact } from '../../schemas/api/fleet';
@@ -19,6 +20,8 @@ interface Props {
   onTaken: (reply: AcknowledgeReply) => void;
   /** The site is what the page is about: it isn't named again. */
   ofThisSite?: boolean;
+  /** Below the words: the units one by one, say. */
+  children?: ReactNode;
 }
 
 export function CauseTag({ verdict }: Pick<CauseNow, 'verdict'>) {
@@ -49,7 +52,16 @@ function Where({ cause }: { cause: CauseNow }) {
 }
 
 /** One cause to act on, as a sheet: what, where, what it rests on, since when, and what it costs. */
-export function CauseSheet({ cause, timeZone, now, contact, taken, onTaken, ofThisSite = false }: Props) {
+export function CauseSheet({
+  cause,
+  timeZone,
+  now,
+  contact,
+  taken,
+  onTaken,
+  ofThisSite = false,
+  children,
+}: Props) {
   const readerZone = useReaderZone();
   const live = treatAsLive(cause);
   const zone = clocksDiffer(cause.since, timeZone, readerZone) ? ` ${zoneName(cause.since, timeZone)}` : '';
@@ -83,6 +95,7 @@ export function CauseSheet({ cause, timeZone, now, contact, taken, onTaken, ofTh
       {cause.alternatives.length > 0 && (
         <p className="mt-1 text-sm text-ink-2">It could also be: {listed(cause.alternatives)}.</p>
       )}
+      {children && <div className="mt-3">{children}</div>}
       {isHazard(cause) && (
         <Acknowledge
           cause={cause}

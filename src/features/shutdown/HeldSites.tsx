@@ -1,0 +1,67 @@
+import { Table, type Column } from '../../components/ui/Table';
+import { MixBar } from '../../drawings/MixBar';
+import { number } from '../../drawings/numbers';
+import { clockOrDate, fullTime, zoneName } from '../../drawings/times';
+import type { CommandNow } from '../../schemas/api/now';
+import { paths } from '../../schemas/paths';
+import type { Held } from './groups';
+
+const IN_FORCE: Record<CommandNow['inForce'], string> = {
+  initiator: 'Initiator open',
+  keep_alive_lost: 'Keep-alive gone',
+  power_lost: 'Power gone',
+  released: 'Released',
+};
+
+/** Confirmed: a unit that says it is in shutdown and is not stuck there against a release. */
+const confirmed = ({ site: { counts } }: Held): number => Math.max(0, counts.shutdown - counts.stuck);
+
+/** Sites with something other than a release in force: where, since when, by whom, and how many units say so. */
+export function HeldSites({ caption, held, now }: { caption: string; held: readonly Held[]; now: string }) {
+  const columns: Column<Held>[] = [
+    {
+      key: 'site',
+      label: 'Site',
+      cell: ({ site }) => (
+        <a
+          href={paths.site(site.id)}
+          className="target inline-flex items-center font-semibold hover:underline"
+        >
+          {site.name}
+        </a>
+      ),
+    },
+    {
+      key: 'commands',
+      label: 'In force',
+      cell: ({ site, commands }) => (
+        <ul className="space-y-1">
+          {commands.map((c) => (
+            <li key={`${c.whereKind} ${c.where}`}>
+              {c.where}: {IN_FORCE[c.inForce].toLowerCase()} since{' '}
+              <time dateTime={c.since} title={fullTime(c.since, site.timeZone)}>
+                {clockOrDate(c.since, now, site.timeZone)} {zoneName(c.since, site.timeZone)}
+              </time>
+              {c.by && <span className="text-ink-2">, {c.by}</span>}
+            </li>
+          ))}
+        </ul>
+      ),
+    },
+    {
+      key: 'units',
+      label: 'Units',
+      from: 'sm',
+      cell: ({ site }) => (
+        <MixBar id={`held-${site.id}-${caption.length}`} counts={site.counts} width={150} />
+      ),
+    },
+    {
+      key: 'confirmed',
+      label: 'Say they are in shutdown',
+      numeric: true,
+      cell: (line) => `${number(confirmed(line))} of ${number(line.site.counts.units)}`,
+    },
+  ];
+  return <Table caption={caption} columns={columns} rows={held} rowKey={({ site }) => site.id} />;
+}

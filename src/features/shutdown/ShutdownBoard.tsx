@@ -1,0 +1,194 @@
+import { useQuery } from '@tanstack/react-query';
+import { useMemo } from 'react';
+import { CauseSheet } from '../../components/causes/CauseSheet';
+import { Button, ButtonLink } from '../../components/ui/Button';
+import { Caution } from '../../components/ui/Caution';
+import { Heading } from '../../components/ui/Heading';
+import { LiveMark } from '../../components/ui/Live';
+import { Notice } from '../../components/ui/Notice';
+import { Segmented } from '../../components/ui/Segmented';
+import { Sheet } from '../../components/ui/Sheet';
+import { useNow } from '../../components/ui/Time';
+import { useReaderZone } from '../../components/ui/reader-zone';
+import { counted } from '../../drawings/numbers';
+import { withQuery } from '../../lib/api';
+import { useLive } from '../../lib/live-hook';
+import { queryClient } from '../../lib/query-client';
+import { useViewInUrl } from '../../lib/view-in-url';
+import type { CauseNow } from '../../schemas/api/now';
+import type { ShutdownNow, ShutdownView } from '../../schemas/api/shutdown';
+import { paths } from '../../schemas/paths';
+import { HeldSites } from './HeldSites';
+import { UnitsTable } from './UnitsTable';
+import { shutdownFinding } from './finding';
+import { heldSites, shutdownGroups, type Group } from './groups';
+import { changedShutdown, shutdownKey, shutdownQuery, withAcknowledgement } from './query';
+
+export const SHUTDOWN_DEFAULTS: ShutdownView = { q: '', show: 'all' };
+
+const SHOWS = [
+  { value: 'all', label: 'All' },
+  { value: 'not_shutting_down', label: 'Not shutting down' },
+  { value: 'stuck', label: 'Stuck' },
+  { value: 'unconfirmed', label: 'Unconfirmed' },
+  { value: 'silent', label: 'Silent' },
+] as const;
+
+const TITLE: Record<CauseNow['verdict'], string> = {
+  not_shutting_down: 'Kept passing after a command',
+  stuck: 'Stuck in shutdown after a release',
+  unconfirmed: 'Shutdown commanded, not confirmed',
+  silent: "Silent: whether they would shut down can't be confirmed",
+};
+
+interface Props {
+  initial: ShutdownNow;
+  view: ShutdownView;
+  timeZone: string;
+}
+
+export function ShutdownBoard({ initial, view: initialView, timeZone }: Props) {
+  const client = queryClient();
+  const { data: now, error, refetch } = useQuery(shutdownQuery(initial), client);
+  const status = useLive('fleet', (change) => {
+    client.setQueryData<ShutdownNow>(shutdownKey, (old) =>
+      changedShutdown(old ?? initial, change, new Date().toISOString()),
+    );
+    if (change.causes) void client.invalidateQueries({ queryKey: shutdownKey });
+  });
+  const [view, change] = useViewInUrl(initialView, SHUTDOWN_DEFAULTS);
+  const clock = useNow(initial.at).toISOString();
+  const readerZone = useReaderZone() ?? timeZone;
+  const finding = useMemo(() => shutdownFinding(now.sites, now.causes), [now.sites, now.causes]);
+  const groups = useMemo(() => shutdownGroups(now.causes, view), [now.causes, view]);
+  const held = useMemo(() => heldSites(now.sites), [now.sites]);
+  const zoneOf = (siteId: string) => now.sites.find((s) => s.id === siteId)?.timeZone ?? timeZone;
+
+  const section = ({ verdict, causes }: Group) => (
+    <section key={verdict} aria-labelledby={`group-${verdict}`} className="mb-8">
+      <div className="mb-2.5 flex flex-wrap items-baseline justify-between gap-x-4">
+        <h2 id={`group-${verdict}`} className="text-[15px] leading-5 tracking-[-0.01em]">
+          {TITLE[verdict]}
+        </h2>
+        <p className="text-sm text-ink-2">
+          {counted(
+            causes.reduce((n, c) => n + c.units.length, 0),
+            'unit',
+          )}
+          , {counted(causes.length, 'cause')} · oldest first
+        </p>
+      </div>
+      <div className="grid items-start gap-4 lg:grid-cols-2">
+        {causes.map((cause) => (
+          <div key={cause.key} className="min-w-0">
+            <CauseSheet
+              cause={cause}
+              timeZone={zoneOf(cause.siteId)}
+              now={clock}
+              contact={now.contacts.find((c) => c.siteId === cause.siteId)}
+              taken={now.acknowledgements.find((a) => a.key === cause.key)}
+              onTaken={(reply) =>
+                client.setQueryData<ShutdownNow>(shutdownKey, (old) => withAcknowledgement(old ?? now, reply))
+              }
+            >
+              <UnitsTable cause={cause} timeZone={zoneOf(cause.siteId)} now={clock} />
+            </CauseSheet>
+          </div>
+        ))}
+      </div>
+    </section>
+  );
+
+  return (
+    <>
+      <Heading
+        finding={finding.heading}
+        sentence={finding.sentence}
+        actions={
+          <LiveMark
+            lostSince={!status.live && status.since ? status.since.toISOString() : null}
+            timeZone={readerZone}
+          />
+        }
+      />
+      <p className="sr-only" role="status">
+        {finding.heading}
+      </p>
+      <div className="mb-6">
+        <Caution strong="Shutdown is not isolation.">
+          Each module and its leads to its unit stay at module voltage in light. Wakeline reads what units
+          report and never switches. Isolate, lock out, prove dead with a rated meter. Licensed or qualified
+          people; local code comes first.
+        </Caution>
+      </div>
+      {error && (
+        <div className="mb-6">
+          <Notice
+            kind="failed"
+            title="The state of shutdown could not be read anew"
+            action={<Button onClick={() => void refetch()}>Try again</Button>}
+          >
+            {error.message} What is shown may be old.
+          </Notice>
+        </div>
+      )}
+      <form
+        action={paths.shutdown()}
+        className="no-print mb-6 flex flex-wrap items-center gap-x-5 gap-y-2"
+        onSubmit={(event) => event.preventDefault()}
+      >
+        <input
+          type="search"
+          name="q"
+          aria-label="Filter by site, part, string or serial"
+          placeholder="Filter by site, part, string or serial"
+          autoComplete="off"
+          value={view.q}
+          onChange={(event) => change({ q: event.target.value }, 'typed')}
+          className="target w-full rounded border border-rule bg-sheet px-2.5 text-[15px] placeholder:text-ink-3 sm:w-[290px]"
+        />
+        <Segmented
+          label="Which units"
+          options={SHOWS}
+          value={view.show}
+          onChange={(show) => change({ show })}
+        />
+        <ButtonLink href={withQuery(paths.api.shutdownCsv(), view)} download className="ml-auto !text-sm">
+          CSV
+        </ButtonLink>
+      </form>
+      {groups.length > 0
+        ? groups.map(section)
+        : (now.causes.length > 0 || view.q !== '' || view.show !== 'all') && (
+            <div className="mb-8">
+              <Notice
+                kind="empty"
+                title="Nothing matches"
+                action={<Button onClick={() => change(SHUTDOWN_DEFAULTS)}>Show all</Button>}
+              >
+                Another word or filter may.
+              </Notice>
+            </div>
+          )}
+      {held.lost.length > 0 && (
+        <Sheet id="lost" className="mb-8" flush title="Keep-alive or power gone" aside="longest first">
+          <HeldSites caption="Sites whose keep-alive or power went" held={held.lost} now={clock} />
+        </Sheet>
+      )}
+      <Sheet
+        id="purpose"
+        flush
+        title="In shutdown on purpose"
+        aside={held.purpose.length > 0 ? 'longest first' : null}
+      >
+        {held.purpose.length > 0 ? (
+          <HeldSites caption="Sites in shutdown on purpose" held={held.purpose} now={clock} />
+        ) : (
+          <Notice kind="empty" title="No initiator is open">
+            A site whose initiator a person opens is listed here and not among the faults.
+          </Notice>
+        )}
+      </Sheet>
+    </>
+  );
+}

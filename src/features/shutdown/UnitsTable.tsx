@@ -1,0 +1,61 @@
+import { Table, type Column } from '../../components/ui/Table';
+import { clockOrDate, fullTime } from '../../drawings/times';
+import type { CauseNow } from '../../schemas/api/now';
+import { paths } from '../../schemas/paths';
+
+type Unit = CauseNow['units'][number];
+/** So many are listed at once; more open on demand. */
+const AT_ONCE = 12;
+
+const byName = new Intl.Collator('en', { numeric: true });
+const byPlace = (a: Unit, b: Unit): number =>
+  byName.compare(a.stringName, b.stringName) || (a.position ?? 0) - (b.position ?? 0);
+
+/** The units of one cause, in the order in which a person walks them. */
+export function UnitsTable({ cause, timeZone, now }: { cause: CauseNow; timeZone: string; now: string }) {
+  const units = [...cause.units].sort(byPlace);
+  const columns: Column<Unit>[] = [
+    {
+      key: 'string',
+      label: 'String',
+      cell: (unit) => (
+        <a
+          href={`${paths.string(cause.siteId, unit.stringId)}${unit.position === null ? '' : `#position-${unit.position}`}`}
+          className="target inline-flex min-w-[44px] items-center font-semibold hover:underline"
+        >
+          {unit.stringName}
+        </a>
+      ),
+    },
+    { key: 'position', label: 'Position', numeric: true, cell: (unit) => unit.position ?? 'unknown' },
+    { key: 'serial', label: 'Serial', from: 'sm', cell: (unit) => unit.serial ?? '–' },
+    {
+      key: 'since',
+      label: 'Since',
+      numeric: true,
+      cell: (unit) => (
+        <time dateTime={unit.since} title={fullTime(unit.since, timeZone)}>
+          {clockOrDate(unit.since, now, timeZone)}
+        </time>
+      ),
+    },
+  ];
+  const table = (rows: readonly Unit[]) => (
+    <Table
+      caption={`Units: ${cause.headline}`}
+      columns={columns}
+      rows={rows}
+      rowKey={(unit) => `${unit.stringId} ${unit.position ?? '-'}`}
+    />
+  );
+  if (units.length === 0) return null;
+  if (units.length <= AT_ONCE) return table(units);
+  return (
+    <details>
+      <summary className="target inline-flex cursor-pointer items-center font-medium text-petrol hover:underline">
+        All {units.length} by position
+      </summary>
+      {table(units)}
+    </details>
+  );
+}

@@ -1,0 +1,21 @@
+import { partInWords } from '../../components/causes/words';
+import type { ShutdownRow } from './groups';
+
+/** The Shutdown page as a download: one row a unit, its cause beside it. */
+export const SHUTDOWN_COLUMNS: { header: string; value: (row: ShutdownRow) => string | number | null }[] = [
+  { header: 'verdict', value: ({ cause }) => cause.verdict.replaceAll('_', ' ') },
+  { header: 'site', value: ({ cause }) => cause.siteName },
+  { header: 'string', value: ({ unit }) => unit?.stringName ?? null },
+  { header: 'position', value: ({ unit }) => unit?.position ?? null },
+  { header: 'serial', value: ({ unit }) => unit?.serial ?? null },
+  { header: 'since (UTC)', value: ({ cause, unit }) => unit?.since ?? cause.since },
+  { header: 'shared part', value: ({ cause }) => (cause.sharedPart ? partInWords(cause.sharedPart) : null) },
+  { header: 'cause', value: ({ cause }) => cause.headline },
+  { header: 'evidence', value: ({ cause }) => cause.evidence },
+  { header: 'could also be', value: ({ cause }) => cause.alternatives.join('; ') },
+  { header: 'confidence (%)', value: ({ cause }) => Math.round(cause.confidence * 100) },
+  {
+    header: 'loss (Wh/day)',
+    value: ({ cause }) => (cause.lossWhPerDay === null ? null : Math.round(cause.lossWhPerDay)),
+  },
+];
