@@ -26,6 +26,7 @@ export const paths = {
     stringHistoryCsv: (string: string) => `/api/strings/${string}/history.csv`,
     stringUnits: (string: string) => `/api/strings/${string}/units`,
     rollCall: (site: string) => `/api/sites/${site}/roll-call`,
+    rollCallCsv: (site: string) => `/api/sites/${site}/roll-call/units.csv`,
     rollCallStop: (site: string) => `/api/sites/${site}/roll-call/stop`,
     shutdown: () => '/api/shutdown',
     shutdownCsv: () => '/api/shutdown.csv',

@@ -17,7 +17,7 @@ describe('the month', () => {
     [{ measured: 2_100_000 }, '8 % over what its weather allowed'],
     [{ expected: null }, '30 days, without a comparison'],
     [{ expected: 0 }, '30 days, without a comparison'],
-    [{ days: 0 }, 'No day of this month is complete yet.'],
+    [{ days: 0 }, 'no day of this month is complete yet'],
   ])('%j', (more, note) => {
     expect(plain(monthCard({ ...month, ...more }).note)).toBe(note);
   });

@@ -23,7 +23,7 @@ const ABOUT = 0.025;
 export function monthCard(month: CustomerSite['month']): Card {
   const label = monthWords(month.first);
   const figure = energy(month.energy);
-  if (month.days === 0) return { label, figure: '–', note: 'No day of this month is complete yet.' };
+  if (month.days === 0) return { label, figure, note: 'no day of this month is complete yet' };
   if (!month.expected || month.expected <= 0)
     return { label, figure, note: `${counted(month.days, 'day')}, without a comparison` };
   const off = month.measured / month.expected - 1;

@@ -1,5 +1,6 @@
 import { z } from 'zod';
 import { heardItem } from '../live';
+import { siteUnderWay } from './commissioning';
 import { commandNow, gatewayNow, id, stringNow } from './now';
 
 /** The roll call of a site: who may have answered, who has, and who runs it. Times ISO 8601 in UTC. */
@@ -32,6 +33,15 @@ export const rollCallPage = z.object({
   gateways: z.array(gatewayNow),
   loggers: z.array(z.object({ serial: z.string(), connected: z.boolean(), lastSpokeAt: time.nullable() })),
   commands: z.array(commandNow), // in force other than released: what a unit follows once it is heard
+  /** What is recorded of the site beside the roll call. */
+  known: siteUnderWay.pick({
+    strings: true,
+    slots: true,
+    placed: true,
+    checks: true,
+    readings: true,
+    lastTest: true,
+  }),
   /** Names of unit types here that pass full module voltage until they have answered, as entered in the catalogue. */
   passesUntilHeard: z.array(z.string()),
 });
@@ -48,3 +58,11 @@ export const rollCallStart = z.strictObject({
 export type RollCallStart = z.infer<typeof rollCallStart>;
 
 export const siteParams = z.object({ site: id });
+
+/** What the table of strings shows, as its address has it; what cannot be read is left at its default. */
+export const rollCallView = z.object({
+  strings: z.enum(['all', 'missing']).catch('all'),
+  sort: z.enum(['name', 'heard', 'signal']).catch('name'),
+  order: z.enum(['up', 'down']).catch('up'),
+});
+export type RollCallView = z.infer<typeof rollCallView>;

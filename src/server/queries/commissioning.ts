@@ -26,13 +26,17 @@ interface Row {
   testResult: 'passed' | 'failed' | 'consistent' | 'not_witnessed' | null;
 }
 
-/** Sites that the actor sees and that are being commissioned, or where a roll call runs; by name. */
-export async function sitesUnderWay(tx: Tx): Promise<SiteUnderWay[]> {
+/**
+ * Sites that the actor sees and that are being commissioned, or where a roll call runs; by name. With a site's
+ * number: that one, whatever its stage.
+ */
+export async function sitesUnderWay(tx: Tx, siteId?: number): Promise<SiteUnderWay[]> {
   const { rows } = await tx.raw<{ rows: Row[] }>(
     `with under_way as (
        select id, ref, name, place, time_zone, stage from site
        where ${SITE_VISIBLE}
-         and (stage = 'commissioning'
+         and (cast(:siteId as int4) is null or site.id = :siteId)
+         and (cast(:siteId as int4) is not null or stage = 'commissioning'
               or exists (select from roll_call r where r.site_id = site.id and r.stopped_at is null))
      )
      select u.ref as id, u.name, u.place, u.time_zone as "timeZone", u.stage,
@@ -72,6 +76,7 @@ export async function sitesUnderWay(tx: Tx): Promise<SiteUnderWay[]> {
        select at, result from shutdown_test where site_id = u.id and superseded_by is null order by at desc limit 1
      ) test on true
      order by u.name`,
+    { siteId: siteId ?? null },
   );
   return rows.map((r) => ({
     id: r.id,

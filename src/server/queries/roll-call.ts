@@ -1,6 +1,7 @@
 import type { HeardItem } from '../../schemas/live';
 import type { RollCallRun } from '../../schemas/api/roll-call';
 import type { Tx } from '../db/transaction';
+import { CHANNELS, tellSiteChanged } from './live-notices';
 
 /** Reading and writing of roll calls. Every statement takes the site, which the caller found as the actor. */
 
@@ -63,9 +64,13 @@ export async function closeRollCall(
   return rows[0] ? latestRollCall(tx, closed.siteId) : undefined;
 }
 
-/** Wakes the process that serves the site's loggers; the notice leaves when the transaction commits. */
+/**
+ * Wakes the process that serves the site's loggers, and every page that shows the site; the notices leave when the
+ * transaction commits.
+ */
 export async function announceRollCall(tx: Tx, siteId: number): Promise<void> {
-  await tx.raw(`select pg_notify('roll_call', ?::text)`, [String(siteId)]);
+  await tx.raw('select pg_notify(?, ?)', [CHANNELS.rollCall, String(siteId)]);
+  await tellSiteChanged(tx, siteId);
 }
 
 export async function addRollCallEvent(

@@ -1,0 +1,113 @@
+import { useCallback, useRef } from 'react';
+import { useQuery } from '@tanstack/react-query';
+import { Caution } from '../../components/ui/Caution';
+import { Heading } from '../../components/ui/Heading';
+import { LiveMark } from '../../components/ui/Live';
+import { Notice } from '../../components/ui/Notice';
+import { useNow } from '../../components/ui/Time';
+import { api } from '../../lib/api';
+import { useLive } from '../../lib/live-hook';
+import { queryClient } from '../../lib/query-client';
+import type { Change } from '../../schemas/live';
+import type { ChangeKind } from '../../lib/live';
+import { paths } from '../../schemas/paths';
+import type { RollCallPage, RollCallView } from '../../schemas/api/roll-call';
+import { CurveSheet } from './CurveSheet';
+import { KnownSteps } from './KnownSteps';
+import { GatewaysSheet, MissingSheet, UnknownSheet } from './Lists';
+import { RunPanel } from './RunPanel';
+import { StringsSheet } from './StringsSheet';
+import { patchRollCall, runChanged } from './live';
+import { outlookOf } from './outlook';
+import { tallyOf } from './tally';
+import { rollCallWords } from './words';
+
+interface Props {
+  initial: RollCallPage;
+  mayRun: boolean;
+  view: RollCallView;
+}
+
+/** The roll call of a site, live. */
+export function RollCall({ initial, mayRun, view }: Props) {
+  const siteId = initial.site.id;
+  const key = ['roll-call', siteId];
+  const client = queryClient();
+  const { data: page, error } = useQuery(
+    {
+      queryKey: key,
+      queryFn: ({ signal }) => api<RollCallPage>(paths.api.rollCall(siteId), { signal }),
+      initialData: initial,
+    },
+    client,
+  );
+  const again = () => void client.invalidateQueries({ queryKey: key });
+  const snapshots = useRef(new Set<string>());
+  const heed = useCallback(
+    (topic: string) => (change: Change, kind: ChangeKind) => {
+      client.setQueryData<RollCallPage>(['roll-call', siteId], (old) => old && patchRollCall(old, change));
+      // a second snapshot means that deltas may have been missed
+      const missed = kind === 'snapshot' && snapshots.current.has(topic);
+      if (kind === 'snapshot') snapshots.current.add(topic);
+      if (missed || (kind === 'delta' && runChanged(change)))
+        void client.invalidateQueries({ queryKey: ['roll-call', siteId] });
+    },
+    [client, siteId],
+  );
+  const roll = useLive(`roll-call:${siteId}`, heed('roll'));
+  const site = useLive(`site:${siteId}`, heed('site'));
+  const lost = [roll, site].find((s) => !s.live && s.since);
+  const now = useNow(initial.at, 5000);
+
+  const tally = tallyOf(page);
+  const open = page.run !== null && page.run.stoppedAt === null;
+  const outlook = open && page.run ? outlookOf(tally, page.run, now) : null;
+  const words = rollCallWords(tally, page.run, outlook, page.site.timeZone);
+  const waits = page.passesUntilHeard.length > 0 && tally.missing.length > 0;
+  return (
+    <>
+      <Heading
+        crumbs={[
+          { label: 'Commissioning', href: paths.commissioning() },
+          { label: page.site.name, href: paths.site(siteId) },
+        ]}
+        finding={words.heading}
+        sentence={
+          <>
+            {words.strong && <strong>{words.strong}</strong>} {words.rest}
+          </>
+        }
+      />
+      <div className="-mt-3 mb-3 min-h-[22px]">
+        <LiveMark lostSince={lost?.since ? lost.since.toISOString() : null} timeZone={page.site.timeZone} />
+      </div>
+      {error && (
+        <div className="mb-4">
+          <Notice kind="stale" title="The roll call could not be read again">
+            {error.message}
+          </Notice>
+        </div>
+      )}
+      <div className="grid gap-5 lg:grid-cols-[minmax(0,1fr)_340px] xl:grid-cols-[220px_minmax(0,1fr)_340px]">
+        <div className="order-3 lg:col-span-2 xl:order-1 xl:col-span-1">
+          <KnownSteps page={page} tally={tally} open={open} />
+        </div>
+        <div className="order-2 grid min-w-0 content-start gap-5">
+          <CurveSheet page={page} tally={tally} now={now} outlook={outlook} />
+          <StringsSheet siteId={siteId} tally={tally} view={view} />
+          <MissingSheet tally={tally} started={page.run !== null} siteId={siteId} />
+        </div>
+        <div className="order-1 grid content-start gap-5 lg:order-2 xl:order-3">
+          {waits && (
+            <Caution strong="Until they have answered, units of this type pass full module voltage">
+              and do not obey the initiator. Treat every string as live.
+            </Caution>
+          )}
+          <RunPanel page={page} mayRun={mayRun} roster={tally.roster} onChanged={again} />
+          <UnknownSheet page={page} tally={tally} />
+          <GatewaysSheet page={page} tally={tally} />
+        </div>
+      </div>
+    </>
+  );
+}

@@ -1,0 +1,107 @@
+import { Segmented } from '../../components/ui/Segmented';
+import { Sheet } from '../../components/ui/Sheet';
+import { Table, type Column } from '../../components/ui/Table';
+import { ButtonLink } from '../../components/ui/Button';
+import { Notice } from '../../components/ui/Notice';
+import { Comb } from '../../drawings/Comb';
+import { decibelMilliwatts } from '../../drawings/numbers';
+import { useViewInUrl } from '../../lib/view-in-url';
+import { paths } from '../../schemas/paths';
+import type { RollCallView } from '../../schemas/api/roll-call';
+import type { RollTally, StringTally } from './tally';
+import { LIST_DEFAULTS, heardSlots, listedStrings, sortingOf } from './list';
+
+interface Props {
+  siteId: string;
+  tally: RollTally;
+  view: RollCallView;
+}
+
+/** The roll by string: a comb each, heard over roster, the weakest signal. */
+export function StringsSheet({ siteId, tally, view: initial }: Props) {
+  const [view, change] = useViewInUrl(initial, LIST_DEFAULTS);
+  const columns: Column<StringTally>[] = [
+    {
+      key: 'name',
+      label: 'String',
+      sortable: true,
+      cell: (s) => (
+        <a
+          href={paths.string(siteId, s.string.id)}
+          className="inline-flex min-h-[36px] items-center font-semibold hover:underline"
+        >
+          {s.string.name}
+        </a>
+      ),
+    },
+    {
+      key: 'units',
+      label: 'Units, from the negative end',
+      className: 'w-full',
+      cell: (s) => <Comb id={`comb-${s.string.id}`} slots={heardSlots(s)} width={252} />,
+    },
+    {
+      key: 'heard',
+      label: 'Heard',
+      numeric: true,
+      sortable: true,
+      cell: (s) => `${s.heard} / ${s.units.length}`,
+    },
+    {
+      key: 'signal',
+      label: 'Weakest signal',
+      numeric: true,
+      sortable: true,
+      from: 'sm',
+      cell: (s) => (s.weakest ? decibelMilliwatts(s.weakest.signal) : 'none'),
+    },
+  ];
+  const rows = listedStrings(tally.strings, view);
+  return (
+    <Sheet
+      id="strings"
+      title="Strings"
+      flush
+      aside={
+        <div className="flex flex-wrap items-center gap-x-4 gap-y-1">
+          <Segmented
+            label="Which strings"
+            options={[
+              { value: 'all', label: `All ${tally.strings.length}` },
+              {
+                value: 'missing',
+                label: `Still missing units, ${tally.strings.filter((s) => s.heard < s.units.length).length}`,
+              },
+            ]}
+            value={view.strings}
+            onChange={(strings) => change({ strings })}
+          />
+          <ButtonLink href={paths.api.rollCallCsv(siteId)} download>
+            Units as CSV
+          </ButtonLink>
+        </div>
+      }
+    >
+      <Table
+        caption="Roll call by string"
+        columns={columns}
+        rows={rows}
+        rowKey={(s) => s.string.id}
+        sorting={sortingOf(view)}
+        onSort={(s) => change({ sort: s.key as RollCallView['sort'], order: s.descending ? 'down' : 'up' })}
+        empty={<Notice kind="empty" title="No string is missing a unit" />}
+      />
+      {tally.mute > 0 && (
+        <p className="mt-3 text-sm text-ink-2">
+          {tally.mute} units of shutdown-only strings are not on the roll: according to the type entered they
+          cannot answer.
+        </p>
+      )}
+      {tally.emptySlots > 0 && (
+        <p className="mt-3 text-sm text-ink-2">
+          {tally.emptySlots} {tally.emptySlots === 1 ? 'slot has' : 'slots have'} no serial on the as-built.
+        </p>
+      )}
+    </Sheet>
+  );
+}

@@ -1,0 +1,195 @@
+import {
+  DATASHEET_SCALE,
+  QUARTER_MS,
+  clearDay,
+  ownBestScale,
+  type ArrayAtPlace,
+} from '../../domain/output/clear-day';
+import { sunRiseSet } from '../../domain/photovoltaics/sun/rise-set';
+import type { CustomerNow, CustomerSite, CustomerSites } from '../../schemas/api/customer';
+import type { SiteNow } from '../../schemas/api/now';
+import type { Tx } from '../db/transaction';
+import { found } from '../errors';
+import {
+  daysOf,
+  lastTestOf,
+  localDayOf,
+  quartersOf,
+  roofRows,
+  type DaysRow,
+  type QuarterRow,
+  type RoofRow,
+} from '../queries/customer';
+import { sitesNow } from '../queries/sites-now';
+
+/** Days of the site's own quarters that its clear day is scaled to. */
+const OWN_BEST_DAYS = 60;
+const DAY_MS = 86_400_000;
+/** Between the days whose daylight is reckoned; those between are taken to be alike. */
+const DAYLIGHT_STEP_DAYS = 7;
+
+function nowOf(roof: RoofRow, site: SiteNow, at: Date): CustomerNow {
+  return {
+    at: at.toISOString(),
+    stage: site.stage,
+    modules: roof.modules,
+    reporting: roof.reporting,
+    passing: site.counts.passing,
+    shutdown: site.counts.shutdown,
+    unheard: site.counts.unheard,
+    silent: site.counts.silent,
+    dark: site.counts.dark,
+    stuck: site.counts.stuck,
+    notShuttingDown: site.counts.notShuttingDown,
+    unconfirmed: site.counts.unconfirmed,
+    stringsNotShuttingDown: roof.stringsNotShuttingDown,
+    power: site.power,
+    daylight: site.daylight,
+    loggers: roof.loggers,
+    quietLoggers: roof.quietLoggers,
+    lastSpokeAt: roof.lastSpokeAt?.toISOString() ?? null,
+    zones: roof.zones,
+    commands: site.commands,
+    inShutdownSince: site.inShutdownSince,
+    inverters: {
+      total: roof.inverters,
+      gridLost: roof.gridLost,
+      fault: roof.inverterFaults,
+      limited: roof.limited,
+    },
+  };
+}
+
+const energyOf = (points: readonly { power: number }[]): number =>
+  points.reduce((sum, p) => sum + (p.power * QUARTER_MS) / 3_600_000, 0);
+
+function todayOf(
+  roof: RoofRow,
+  day: { day: string; from: Date; to: Date },
+  quarters: readonly QuarterRow[],
+): CustomerSite['today'] {
+  const array: ArrayAtPlace = { ...roof, planes: roof.planes };
+  const past = quarters.map((q) => ({ atMs: q.at.getTime(), power: q.power }));
+  const best = ownBestScale(
+    past.filter((q) => q.atMs < day.from.getTime()),
+    array,
+  );
+  const made = past.filter((q) => q.atMs >= day.from.getTime());
+  const clear = clearDay(day.from.getTime(), day.to.getTime(), array, best ?? DATASHEET_SCALE);
+  const counted = new Set(made.map((q) => q.atMs));
+  const points = (list: typeof clear) =>
+    list.map((p) => ({ at: new Date(p.atMs).toISOString(), power: p.power }));
+  return {
+    day: day.day,
+    from: day.from.toISOString(),
+    to: day.to.toISOString(),
+    made: points(made),
+    energy: made.length > 0 ? energyOf(made) : null,
+    clear: points(clear),
+    clearFrom: best === null ? 'datasheet' : 'own_best',
+    clearEnergySoFar: energyOf(clear.filter((p) => counted.has(p.atMs))),
+  };
+}
+
+/** Minutes of daylight on the days from `first` to `last`, both counted. */
+function daylightMinutes(roof: RoofRow, first: string, last: string): number {
+  const from = Date.parse(`${first}T12:00:00Z`);
+  const days = Math.round((Date.parse(`${last}T12:00:00Z`) - from) / DAY_MS) + 1;
+  let minutes = 0;
+  for (let i = 0; i < days; i += DAYLIGHT_STEP_DAYS) {
+    const { sunrise, sunset, sunUp } = sunRiseSet(from + i * DAY_MS, roof);
+    const day =
+      sunrise !== null && sunset !== null ? (sunset - sunrise) / 60_000 : sunUp === 'all_day' ? 1440 : 0;
+    minutes += day * Math.min(DAYLIGHT_STEP_DAYS, days - i);
+  }
+  return minutes;
+}
+
+function lifeOf(roof: RoofRow, days: DaysRow, today: number): CustomerSite['life'] {
+  const from = roof.switchedOnOn;
+  if (!from) return null;
+  const daylight = days.first && days.last ? daylightMinutes(roof, days.first, days.last) : 0;
+  return {
+    from,
+    energy: days.energy + today,
+    workingTime: daylight > 0 ? Math.max(0, 1 - days.lostMinutes / daylight) : null,
+    lostMinutes: days.lostMinutes,
+    lostMinutesGrid: days.lostMinutesGrid,
+    completeness: days.completeness ?? 1,
+  };
+}
+
+/**
+ * What the page for the owner of a roof rests on. Days are the site's own; today is counted from its quarters,
+ * earlier days from their sums.
+ * @throws AppError not_found
+ */
+export async function customerSite(tx: Tx, ref: string, at: Date): Promise<CustomerSite> {
+  const roof = found((await roofRows(tx, at, ref))[0], 'site');
+  const [site] = await sitesNow(tx, at, [roof.siteId]);
+  const day = await localDayOf(tx, roof.timeZone, at);
+  const monthFirst = `${day.day.slice(0, 8)}01`;
+  const quarters = await quartersOf(
+    tx,
+    roof.siteId,
+    new Date(day.from.getTime() - OWN_BEST_DAYS * DAY_MS),
+    day.to,
+  );
+  const month = await daysOf(tx, roof.siteId, monthFirst, day.day);
+  const life = await daysOf(tx, roof.siteId, roof.switchedOnOn ?? day.day, day.day);
+  const today = todayOf(roof, day, quarters);
+  return {
+    site: {
+      id: roof.ref,
+      name: roof.name,
+      place: roof.place,
+      timeZone: roof.timeZone,
+      switchedOnOn: roof.switchedOnOn,
+      shutdownSwitchPlace: roof.shutdownSwitchPlace,
+      strings: roof.strings,
+      ruleSet: roof.ruleSet,
+    },
+    care: {
+      organisation: roof.organisation,
+      contact: roof.contactName,
+      phone: roof.contactPhone || (roof.organisationPhone ?? ''),
+    },
+    now: nowOf(roof, found(site, 'site'), at),
+    today,
+    month: {
+      first: monthFirst,
+      energy: month.energy + (today.energy ?? 0),
+      expected: month.expected,
+      measured: month.measured,
+      days: month.days,
+    },
+    life: lifeOf(roof, life, today.energy ?? 0),
+    lastTest: await lastTestOf(tx, roof.siteId),
+  };
+}
+
+/** Every roof that the actor may see, in a line each. */
+export async function customerSites(tx: Tx, at: Date): Promise<CustomerSites> {
+  const roofs = await roofRows(tx, at);
+  const sites = new Map(
+    (
+      await sitesNow(
+        tx,
+        at,
+        roofs.map((r) => r.siteId),
+      )
+    ).map((s) => [s.id, s]),
+  );
+  return roofs.flatMap((roof) => {
+    const site = sites.get(roof.ref);
+    return site
+      ? {
+          id: roof.ref,
+          name: roof.name,
+          place: roof.place,
+          timeZone: roof.timeZone,
+          now: nowOf(roof, site, at),
+        }
+      : [];
+  });
+}
