@@ -47,7 +47,7 @@ export function checkModuleType(type: ModuleType): void {
   if (type.impRef >= type.iscRef) {
     throw new RangeError(`impRef (${type.impRef} A) must be below iscRef (${type.iscRef} A)`);
   }
-  within('betaVoc', type.betaVoc, -0.02, -0.0001, '1/K');
+  within('betaVoc', type.betaVoc, -0.02, 0, '1/K');
   within('alphaIsc', type.alphaIsc, -0.005, 0.01, '1/K');
   within('gammaPmp', type.gammaPmp, -0.02, 0.01, '1/K');
   wholeWithin('cellsInSeries', type.cellsInSeries, 1, 1000);
@@ -105,7 +105,7 @@ function relativeSlope(
   return (at(STC.temperatureCell + 10) - at(STC.temperatureCell - 10)) / (20 * at(STC.temperatureCell));
 }
 
-/** Errors over what we would forgive: 0.05 % of vmp and imp, 0.5 % of betaVoc. */
+/** Errors over what we would forgive: 0.05 % of vmp and imp, 0.5 % of a usual betaVoc (−0.003 per K). */
 function misfit(type: ModuleType, reference: DiodeReference | null): number {
   if (!reference) return 1e12;
   const { imp, vmp } = maximumPowerPoint(diodeParameters(reference, STC.poaGlobal, STC.temperatureCell));
@@ -113,9 +113,13 @@ function misfit(type: ModuleType, reference: DiodeReference | null): number {
   return (
     ((vmp / type.vmpRef - 1) / 0.0005) ** 2 +
     ((imp / type.impRef - 1) / 0.0005) ** 2 +
-    ((beta / type.betaVoc - 1) / 0.005) ** 2
+    ((beta - type.betaVoc) / 1.5e-5) ** 2
   );
 }
+
+/** (fitted − printed)/printed, a printed 0 taken as −0.0001 per K. */
+const relativeError = (fitted: number, printed: number): number =>
+  ((fitted - printed) / Math.abs(printed === 0 ? 1e-4 : printed)) * (printed > 0 ? 1 : -1);
 
 function remarksOn(type: ModuleType, fit: Omit<DatasheetFit, 'remarks' | 'quality'>): string[] {
   const remarks: string[] = [];
@@ -176,11 +180,11 @@ export function moduleFromDatasheet(type: ModuleType): FittedModule {
     vmp: points.vmp / type.vmpRef - 1,
     imp: points.imp / type.impRef - 1,
     pmp: points.pmp / (type.vmpRef * type.impRef) - 1,
-    betaVoc: relativeSlope(parameters, vocOfDiode) / type.betaVoc - 1,
-    gammaPmp:
-      type.gammaPmp === 0
-        ? 0
-        : relativeSlope(parameters, (p) => maximumPowerPoint(p).pmp) / type.gammaPmp - 1,
+    betaVoc: relativeError(relativeSlope(parameters, vocOfDiode), type.betaVoc),
+    gammaPmp: relativeError(
+      relativeSlope(parameters, (p) => maximumPowerPoint(p).pmp),
+      type.gammaPmp,
+    ),
     ideality: parameters.idealityVoltageRef / thermal,
   };
   const worst = Math.max(Math.abs(errors.vmp), Math.abs(errors.imp), Math.abs(errors.betaVoc) / 10);
