@@ -1,5 +1,6 @@
 import type { EventKind } from '../../domain/verdicts/codes';
 import type { Acknowledgement, MissedItem, SiteContact } from '../../schemas/api/fleet';
+import type { CauseNow } from '../../schemas/api/now';
 import type { Tx } from '../db/transaction';
 import { SITE_VISIBLE } from './visible-site';
 
@@ -15,18 +16,24 @@ export async function contactsOf(tx: Tx, siteIds?: readonly number[]): Promise<S
   return rows;
 }
 
-/** The newest acknowledgement of each cause. A key names one cause while it lasts, so an old one never returns. */
-export async function acknowledgementsOf(tx: Tx, keys: readonly string[]): Promise<Acknowledgement[]> {
-  if (keys.length === 0) return [];
+/**
+ * Who has taken each cause on. It counts only for what was there then: a unit that joined the cause afterwards, or a
+ * cause that came back, asks anew.
+ */
+export async function acknowledgementsOf(tx: Tx, causes: readonly CauseNow[]): Promise<Acknowledgement[]> {
+  if (causes.length === 0) return [];
   const { rows } = await tx.raw<{ rows: { key: string; siteId: string; at: Date; person: string }[] }>(
     `select distinct on (e.detail ->> 'key') e.detail ->> 'key' as key, site.ref as "siteId", e.at,
             e.detail ->> 'person' as person
      from event e join site on site.id = e.site_id
      where e.kind = 'hazard_acknowledged' and e.detail ->> 'key' = any (:keys) and ${SITE_VISIBLE}
      order by e.detail ->> 'key', e.at desc`,
-    { keys: [...keys] },
+    { keys: causes.map((c) => c.key) },
   );
-  return rows.map((r) => ({ ...r, at: r.at.toISOString() }));
+  const newest = new Map(
+    causes.map((c) => [c.key, [c.since, ...c.units.map((u) => u.since)].sort().at(-1) ?? c.since]),
+  );
+  return rows.map((r) => ({ ...r, at: r.at.toISOString() })).filter((r) => r.at >= (newest.get(r.key) ?? ''));
 }
 
 export async function addAcknowledgement(

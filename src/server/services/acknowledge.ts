@@ -38,7 +38,7 @@ export async function acknowledge(
   const contact = (await contactsOf(tx, [site.id]))[0];
   if (!contact)
     throw new AppError('not_found', { message: 'No such site. Check the link, or go back to the fleet.' });
-  const already = (await acknowledgementsOf(tx, [cause.key]))[0];
+  const already = (await acknowledgementsOf(tx, [cause]))[0];
   if (already) return { acknowledgement: already, contact };
 
   await addAcknowledgement(tx, {

@@ -14,10 +14,7 @@ export async function readFleet(tx: Tx, at: Date): Promise<FleetNow> {
     sites,
     causes,
     contacts: await contactsOf(tx),
-    acknowledgements: await acknowledgementsOf(
-      tx,
-      causes.map((c) => c.key),
-    ),
+    acknowledgements: await acknowledgementsOf(tx, causes),
   };
 }
 

@@ -38,10 +38,7 @@ export async function readSite(tx: Tx, ref: string, at: Date): Promise<SitePage>
     loggers: await loggersNow(tx, facts.id),
     zones: await zonesNow(tx, facts.id),
     causes,
-    acknowledgements: await acknowledgementsOf(
-      tx,
-      causes.map((c) => c.key),
-    ),
+    acknowledgements: await acknowledgementsOf(tx, causes),
     rollCall: facts.rollCall,
     lastShutdownTest: facts.lastShutdownTest,
   };
