@@ -10,10 +10,23 @@ export interface Row {
   subfolders?: readonly string[];
 }
 
+export const FEATURES = [
+  'fleet',
+  'site',
+  'strings',
+  'commissioning',
+  'shutdown',
+  'cases',
+  'equipment',
+  'people',
+  'customer',
+] as const;
+const AREAS = FEATURES.map((name) => `src/features/${name}`);
+
 const EVERYTHING = [
   'src/components',
   'src/drawings',
-  'src/features',
+  ...AREAS,
   'src/layouts',
   'src/lib',
   'src/pages',
@@ -27,7 +40,7 @@ const EVERYTHING = [
 const ROUTED = [
   'src/components',
   'src/drawings',
-  'src/features',
+  ...AREAS,
   'src/layouts',
   'src/lib',
   'src/schemas',
@@ -37,17 +50,6 @@ const ROUTED = [
   'src/domain',
 ];
 const FEATURE = ['src/components', 'src/drawings', 'src/lib', 'src/schemas', 'src/domain'];
-export const FEATURES = [
-  'fleet',
-  'site',
-  'strings',
-  'commissioning',
-  'shutdown',
-  'cases',
-  'equipment',
-  'people',
-  'customer',
-] as const;
 
 export const TABLE: readonly Row[] = [
   {
@@ -72,7 +74,7 @@ export const TABLE: readonly Row[] = [
     folder: 'src/components',
     may: ['src/drawings', 'src/lib', 'src/schemas', 'src/domain'],
     packages: 'browser',
-    subfolders: ['ui', 'charts', 'shell', 'states', 'causes'],
+    subfolders: ['ui', 'charts', 'shell', 'states', 'causes', 'events'],
   },
   { folder: 'src/features', may: [], packages: [], subfolders: FEATURES },
   ...FEATURES.map((name): Row => ({ folder: `src/features/${name}`, may: FEATURE, packages: 'browser' })),
@@ -85,7 +87,7 @@ export const TABLE: readonly Row[] = [
   {
     folder: 'src/server/queries',
     may: ['src/server/db', 'src/server/config.ts', 'src/schemas', 'src/domain'],
-    packages: ['pg', 'knex', 'pg-copy-streams'],
+    packages: ['pg', 'knex', 'pg-copy-streams', 'zod'],
     subfolders: [],
   },
   {
@@ -116,7 +118,7 @@ export const TABLE: readonly Row[] = [
   { folder: 'simulator', may: ['src/domain', 'src/schemas'], packages: 'any' },
   {
     folder: 'seeds',
-    may: ['simulator', 'src/domain', 'src/server', 'src/server/db', 'src/server/queries'],
+    may: ['simulator', 'src/domain', 'src/schemas', 'src/server', 'src/server/db', 'src/server/queries'],
     packages: 'any',
   },
   { folder: 'migrations', may: [], packages: ['knex'], subfolders: [] },

@@ -204,7 +204,8 @@ export async function addReadings(db: pg.Pool, scene: Scene, at: Date): Promise<
     kind: 'units_stuck',
   });
   await insert(db, 'audit_entry', { organisation_id: scene.organisation, action: 'trial', subject: 'trial' });
-  await db.query(`insert into ingest_token (logger_id, hash) values ($1::int4, decode(md5('trial' || $1::int4), 'hex'))`, [
-    scene.logger,
-  ]);
+  await db.query(
+    `insert into ingest_token (logger_id, hash) values ($1::int4, decode(md5('trial' || $1::int4), 'hex'))`,
+    [scene.logger],
+  );
 }

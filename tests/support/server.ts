@@ -1,0 +1,81 @@
+import { fork } from 'node:child_process';
+import { createServer } from 'node:net';
+import { fileURLToPath } from 'node:url';
+import type { TestDatabase } from './database';
+
+const SERVE = fileURLToPath(new URL('../../src/server/serve.mjs', import.meta.url));
+
+/** A TCP port that was free a moment ago. */
+export function freePort(): Promise<number> {
+  return new Promise((resolve, reject) => {
+    const probe = createServer();
+    probe.once('error', reject);
+    probe.listen(0, '127.0.0.1', () => {
+      const address = probe.address();
+      probe.close(() =>
+        typeof address === 'object' && address
+          ? resolve(address.port)
+          : reject(new Error('The system gave no port.')),
+      );
+    });
+  });
+}
+
+export interface RunningSite {
+  /** http://127.0.0.1:PORT */
+  url: string;
+  port: number;
+  /** What the process said, for a failing test. */
+  output(): string;
+  stop(): Promise<void>;
+}
+
+/** The built site as a process of its own, on a test's database. Stop it before the database is dropped. */
+export async function startSite(db: TestDatabase, env: Record<string, string> = {}): Promise<RunningSite> {
+  const port = await freePort();
+  const child = fork(SERVE, [], {
+    env: {
+      ...process.env,
+      ...db.env,
+      NODE_ENV: 'production',
+      HOST: '127.0.0.1',
+      PORT: String(port),
+      LOG_LEVEL: 'warn',
+      VITEST: '',
+      ...env,
+    },
+    silent: true,
+    execArgv: [],
+  });
+  let said = '';
+  const hear = (chunk: Buffer) => (said = (said + chunk.toString()).slice(-20_000));
+  child.stdout?.on('data', hear);
+  child.stderr?.on('data', hear);
+  const ended = new Promise<void>((resolve) => child.once('exit', () => resolve()));
+  await new Promise<void>((resolve, reject) => {
+    child.once('message', () => resolve());
+    child.once('exit', (code) => reject(new Error(`The site ended with ${code}:\n${said}`)));
+  });
+  return {
+    url: `http://127.0.0.1:${port}`,
+    port,
+    output: () => said,
+    stop: async () => {
+      child.kill('SIGTERM');
+      await ended;
+    },
+  };
+}
+
+/** Signs in over the API; gives the cookie to send. */
+export async function signInAt(url: string, email: string, password: string): Promise<string> {
+  const response = await fetch(`${url}/api/sign-in`, {
+    method: 'POST',
+    headers: { 'content-type': 'application/json', origin: url },
+    body: JSON.stringify({ email, password }),
+  });
+  const cookie = response.headers.get('set-cookie')?.split(';')[0];
+  if (!response.ok || !cookie)
+    throw new Error(`Sign-in of ${email} gave ${response.status}: ${await response.text()}`);
+  return cookie;
+}
