@@ -212,7 +212,7 @@ describe('whose roof it is', () => {
       () => undefined,
       (e: unknown) => e,
     );
-    if (!(error instanceof AppError)) throw error ?? new Error('it should not have been found');
+    if (!(error instanceof AppError)) throw new Error('it should not have been found', { cause: error });
     return error.kind;
   };
   it('lists the roofs that were given, and no other', async () => {

@@ -49,7 +49,7 @@ async function failure(work: Promise<unknown>): Promise<AppError> {
     (e: unknown) => e,
   );
   if (error instanceof AppError) return error;
-  throw error ?? new Error('it should have been refused');
+  throw new Error('it should have been refused', { cause: error });
 }
 /** What the logger would have brought: first answers of the given serials, a minute apart. */
 async function hear(site: string, serials: string[], startedAt: Date, unknown: string[] = []): Promise<void> {

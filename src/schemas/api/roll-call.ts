@@ -57,8 +57,6 @@ export const rollCallStart = z.strictObject({
 });
 export type RollCallStart = z.infer<typeof rollCallStart>;
 
-export const siteParams = z.object({ site: id });
-
 /** What the table of strings shows, as its address has it; what cannot be read is left at its default. */
 export const rollCallView = z.object({
   strings: z.enum(['all', 'missing']).catch('all'),

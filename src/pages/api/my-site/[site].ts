@@ -1,4 +1,4 @@
-import { siteParams } from '../../../schemas/api/roll-call';
+import { siteParams } from '../../../schemas/api/site';
 import { endpoint } from '../../../server/http/endpoint';
 import { customerSite } from '../../../server/services/customer-page';
 

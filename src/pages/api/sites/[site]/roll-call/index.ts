@@ -1,4 +1,5 @@
-import { rollCallStart, siteParams } from '../../../../../schemas/api/roll-call';
+import { rollCallStart } from '../../../../../schemas/api/roll-call';
+import { siteParams } from '../../../../../schemas/api/site';
 import { endpoint } from '../../../../../server/http/endpoint';
 import { rollCallPage } from '../../../../../server/services/roll-call-page';
 import { startRollCall } from '../../../../../server/services/start-roll-call';

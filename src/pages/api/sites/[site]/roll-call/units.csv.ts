@@ -1,5 +1,5 @@
 import { tallyOf } from '../../../../../features/commissioning/tally';
-import { siteParams } from '../../../../../schemas/api/roll-call';
+import { siteParams } from '../../../../../schemas/api/site';
 import { endpoint } from '../../../../../server/http/endpoint';
 import { csvResponse } from '../../../../../server/reports/csv';
 import { rollCallPage } from '../../../../../server/services/roll-call-page';

@@ -1,0 +1,145 @@
+import type { Permission } from '../../src/domain/access/permissions';
+
+/** A site of the matrix and one of its strings, by public identifier. */
+export interface Target {
+  site: string;
+  string: string;
+}
+export interface Route {
+  /** The file under src/pages. */
+  file: string;
+  method: 'GET' | 'POST' | 'PUT' | 'PATCH' | 'DELETE';
+  /** What the table of permissions must say for it; `public`: works before anybody is signed in. */
+  permission: Permission | 'public';
+  /** What its address names. */
+  of: 'nothing' | 'site' | 'string';
+  path: (target: Target) => string;
+  body?: unknown;
+  /** Statuses that mean that somebody who may was served. */
+  served: readonly number[];
+}
+
+const get = (
+  file: string,
+  permission: Route['permission'],
+  of: Route['of'],
+  path: Route['path'],
+  served: readonly number[] = [200],
+): Route => ({ file, method: 'GET', permission, of, path, served });
+
+/** Every route of the product. A file under src/pages that is not here fails the matrix. */
+export const ROUTES: readonly Route[] = [
+  // pages
+  get('index.astro', 'fleet.read', 'nothing', () => '/'),
+  get('shutdown.astro', 'shutdown.read', 'nothing', () => '/shutdown'),
+  get('status.astro', 'status.read', 'nothing', () => '/status'),
+  get('account.astro', 'own_account.use', 'nothing', () => '/account'),
+  get('commissioning/index.astro', 'roll_call.read', 'nothing', () => '/commissioning'),
+  get(
+    'commissioning/[site]/roll-call.astro',
+    'roll_call.read',
+    'site',
+    (t) => `/commissioning/${t.site}/roll-call`,
+  ),
+  get('sites/[site]/index.astro', 'site.read', 'site', (t) => `/sites/${t.site}`),
+  get(
+    'sites/[site]/strings/[string].astro',
+    'string.read',
+    'string',
+    (t) => `/sites/${t.site}/strings/${t.string}`,
+  ),
+  get('my-site/index.astro', 'customer_page.read', 'nothing', () => '/my-site', [200, 303]),
+  get('my-site/[site].astro', 'customer_page.read', 'site', (t) => `/my-site/${t.site}`),
+  get('sign-in.astro', 'public', 'nothing', () => '/sign-in', [200, 303]),
+  get('404.astro', 'public', 'nothing', () => '/404', [404]),
+  get('500.astro', 'public', 'nothing', () => '/500', [500]),
+  get('problem.astro', 'public', 'nothing', () => '/problem', [404]),
+  // API
+  {
+    file: 'api/sign-in.ts',
+    method: 'POST',
+    permission: 'public',
+    of: 'nothing',
+    path: () => '/api/sign-in',
+    body: {},
+    served: [422],
+  },
+  {
+    file: 'api/sign-out.ts',
+    method: 'POST',
+    permission: 'public',
+    of: 'nothing',
+    path: () => '/api/sign-out',
+    served: [204],
+  },
+  {
+    file: 'api/theme.ts',
+    method: 'PUT',
+    permission: 'own_account.use',
+    of: 'nothing',
+    path: () => '/api/theme',
+    body: { theme: 'system' },
+    served: [204],
+  },
+  get('api/search.ts', 'fleet.read', 'nothing', () => '/api/search?q=a1'),
+  get('api/fleet.ts', 'fleet.read', 'nothing', () => '/api/fleet'),
+  get('api/fleet.csv.ts', 'fleet.read', 'nothing', () => '/api/fleet.csv'),
+  get('api/shutdown.ts', 'shutdown.read', 'nothing', () => '/api/shutdown'),
+  get('api/shutdown.csv.ts', 'shutdown.read', 'nothing', () => '/api/shutdown.csv'),
+  get('api/sites/[site]/index.ts', 'site.read', 'site', (t) => `/api/sites/${t.site}`),
+  get('api/sites/[site]/events.ts', 'site.read', 'site', (t) => `/api/sites/${t.site}/events`),
+  {
+    file: 'api/sites/[site]/acknowledge.ts',
+    method: 'POST',
+    permission: 'hazard.acknowledge',
+    of: 'site',
+    path: (t) => `/api/sites/${t.site}/acknowledge`,
+    body: { key: 'a cause that is over' },
+    served: [200, 204, 409],
+  },
+  get(
+    'api/sites/[site]/roll-call/index.ts',
+    'roll_call.read',
+    'site',
+    (t) => `/api/sites/${t.site}/roll-call`,
+  ),
+  {
+    file: 'api/sites/[site]/roll-call/index.ts',
+    method: 'POST',
+    permission: 'roll_call.run',
+    of: 'site',
+    path: (t) => `/api/sites/${t.site}/roll-call`,
+    body: { personOnSite: 'Per Aalto', onSite: true },
+    served: [200, 409],
+  },
+  {
+    file: 'api/sites/[site]/roll-call/stop.ts',
+    method: 'POST',
+    permission: 'roll_call.run',
+    of: 'site',
+    path: (t) => `/api/sites/${t.site}/roll-call/stop`,
+    served: [200, 409],
+  },
+  get(
+    'api/sites/[site]/roll-call/units.csv.ts',
+    'telemetry.export',
+    'site',
+    (t) => `/api/sites/${t.site}/roll-call/units.csv`,
+  ),
+  get('api/strings/[string]/index.ts', 'string.read', 'string', (t) => `/api/strings/${t.string}`),
+  get('api/strings/[string]/history.ts', 'string.read', 'string', (t) => `/api/strings/${t.string}/history`),
+  get(
+    'api/strings/[string]/history.csv.ts',
+    'telemetry.export',
+    'string',
+    (t) => `/api/strings/${t.string}/history.csv`,
+  ),
+  get('api/strings/[string]/units.ts', 'string.read', 'string', (t) => `/api/strings/${t.string}/units`),
+  get(
+    'api/strings/[string]/units.csv.ts',
+    'telemetry.export',
+    'string',
+    (t) => `/api/strings/${t.string}/units.csv`,
+  ),
+  get('api/my-site/[site].ts', 'customer_page.read', 'site', (t) => `/api/my-site/${t.site}`),
+];
