@@ -198,12 +198,21 @@ export async function up(knex: Knex): Promise<void> {
     create function newest_seen(a int4[], b int4[]) returns int4[] language sql immutable parallel safe as
       $f$ select array_agg(greatest(coalesce(x, 0), coalesce(y, 0)) order by o)
           from unnest(a, b) with ordinality u(x, y, o) $f$;
+    -- cV over a string's units: outputs, or inputs where the type measures no output
+    create function frame_voltage(voltage int2[], voltage_in int2[]) returns int4 language sql immutable parallel safe as
+      $f$ select coalesce(sum(coalesce(o, i)), 0)::int4 from unnest(voltage, voltage_in) u(o, i) $f$;
+    -- dW over a string's units: as reported, else output voltage by current, else input voltage of the units that pass
+    create function frame_power(voltage int2[], voltage_in int2[], current int2[], power int2[], state int2[])
+      returns int4 language sql immutable parallel safe as
+      $f$ select coalesce(round(sum(case when p is not null then p::int8 * 10000 when o is not null then o::int8 * c
+                                         when s = 1 then i::int8 * c end) / 10000.0), 0)::int4
+          from unnest(voltage, voltage_in, current, power, state) u(o, i, c, p, s) $f$;
   `);
 }
 
 export async function down(knex: Knex): Promise<void> {
   await knex.raw(`
-    drop function newest_seen, newest_values, sum_values, merge_values, ensure_days;
+    drop function frame_power, frame_voltage, newest_seen, newest_values, sum_values, merge_values, ensure_days;
     drop table trace, site_day, site_quarter, string_day, rollup_watermark, rollup_dirty, weather_state, inverter_state, input_state,
       string_state, late_frame, string_quarter, weather_frame, inverter_frame, input_frame, string_frame;
   `);

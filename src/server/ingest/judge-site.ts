@@ -1,0 +1,178 @@
+import { solarPositionQuick } from '../../domain/photovoltaics/sun/position-quick';
+import { judgeInput, type InputReading } from '../../domain/verdicts/conductors';
+import {
+  commandedSpans,
+  judgementTimes,
+  lightSpans,
+  timeLimitOf,
+  type LightSpan,
+  type StringContext,
+} from '../../domain/verdicts/context';
+import { UNCHANGED, type JudgeOutcome } from '../../domain/verdicts/evidence';
+import { judgeFrame, sweepString } from '../../domain/verdicts/judge';
+import type { JudgedFrame } from '../../domain/verdicts/observe';
+import { newMemory, resetSlot, type StringMemory } from '../../domain/verdicts/memory';
+import type { KeptJudgement } from '../queries/judgement';
+import type { JudgedSite, JudgedString } from '../queries/judgement-contexts';
+
+const DAY_S = 86_400;
+/** Light is worked out for so long before and after now, and again when half of it is used up. */
+const LIGHT_BEFORE_S = 3 * DAY_S;
+const LIGHT_AFTER_S = 2 * DAY_S;
+
+/** One string as this process judges it. */
+export interface JudgedNow {
+  string: JudgedString;
+  context: StringContext;
+  memory: StringMemory;
+  /** Evidence of the units whose verdict is not ok, by position. */
+  evidence: Record<number, unknown>;
+  /** `memory` differs from what is in the database. */
+  dirty: boolean;
+}
+
+export interface Outcome {
+  judged: JudgedNow;
+  outcome: JudgeOutcome;
+}
+
+/**
+ * The judgement of one site in memory: a context and a memory for each string. Frames are judged after they are
+ * durable, so everything here can be made again from the database.
+ */
+export class SiteJudge {
+  readonly strings = new Map<number, JudgedNow>();
+  /** Its memory is no longer what the database will be asked to keep: nothing of it may be written. */
+  dead = false;
+  /** Frames are being read back; those that come meanwhile are read back too, for they must be judged in order. */
+  catchingUp = false;
+  missed = false;
+  private light: LightSpan[] = [];
+  private lightUntilS = 0;
+
+  constructor(
+    public site: JudgedSite,
+    kept: readonly KeptJudgement[],
+    nowS: number,
+  ) {
+    const memories = new Map(kept.map((k) => [k.stringId, k.kept]));
+    const oldest = Math.min(nowS, ...kept.map((k) => k.kept?.memory.atS || nowS));
+    this.makeLight(Math.max(oldest - DAY_S, nowS - 95 * DAY_S), nowS);
+    for (const string of site.strings) {
+      const context = this.contextOf(string);
+      const before = memories.get(string.id);
+      const usable = before && before.memory.state.length === string.serials.length;
+      const judged: JudgedNow = {
+        string,
+        context,
+        memory: usable ? before.memory : newMemory(context),
+        evidence: {},
+        dirty: !usable,
+      };
+      if (usable) this.exchange(judged, before.serials);
+      this.strings.set(string.id, judged);
+    }
+  }
+
+  get reportIntervalS(): number {
+    return this.site.reportIntervalS;
+  }
+
+  /** The plant or what it was told has changed: new contexts, the memories stay but for exchanged units. */
+  setSite(site: JudgedSite, nowS: number): void {
+    this.site = site;
+    if (nowS > this.lightUntilS - LIGHT_AFTER_S / 2) this.makeLight(nowS - LIGHT_BEFORE_S, nowS);
+    const before = new Map(this.strings);
+    this.strings.clear();
+    for (const string of site.strings) {
+      const context = this.contextOf(string);
+      const old = before.get(string.id);
+      if (!old || old.string.serials.length !== string.serials.length) {
+        this.strings.set(string.id, {
+          string,
+          context,
+          memory: newMemory(context),
+          evidence: {},
+          dirty: true,
+        });
+        continue;
+      }
+      const judged = { ...old, string, context };
+      this.exchange(judged, old.string.serials);
+      this.strings.set(string.id, judged);
+    }
+  }
+
+  frame(stringId: number, frame: JudgedFrame): Outcome | null {
+    const judged = this.strings.get(stringId);
+    if (!judged || frame.atS < judged.memory.atS) return null;
+    judged.dirty = true;
+    return taken(judged, judgeFrame(judged.memory, judged.context, frame));
+  }
+
+  sweep(judged: JudgedNow, nowS: number): Outcome | null {
+    if (nowS > this.lightUntilS - DAY_S) this.setSite(this.site, nowS);
+    return taken(judged, sweepString(judged.memory, judged.context, nowS));
+  }
+
+  input(judged: JudgedNow, reading: InputReading): Outcome | null {
+    const { pending, pendingCount } = judged.memory;
+    const outcome = judgeInput(judged.memory, judged.context, reading);
+    if (judged.memory.pending !== pending || judged.memory.pendingCount !== pendingCount) judged.dirty = true;
+    return taken(judged, outcome);
+  }
+
+  private contextOf(string: JudgedString): StringContext {
+    const { site } = this;
+    const behaviour = site.behaviours.get(string.unitTypeId);
+    if (!behaviour) throw new Error(`unit type ${string.unitTypeId} of string ${string.id} is missing`);
+    const { timeLimitS, source } = timeLimitOf(site.ruleSet);
+    const transmitters = string.transmitterIds.flatMap((id) => {
+      const t = site.transmitters.get(id);
+      return t ? [{ own: t.own, zone: site.zones.get(t.zoneId) ?? [] }] : [];
+    });
+    return {
+      behaviour,
+      times: judgementTimes(site.reportIntervalS, timeLimitS),
+      timeLimitSource: source,
+      slots: string.serials.map((serial) => serial !== null),
+      heardAtS: string.heardAtS,
+      commands: commandedSpans(behaviour, site.stage, site.zones.get(string.zoneId) ?? [], transmitters),
+      light: this.light,
+      snowLikely: false,
+    };
+  }
+
+  private exchange(judged: JudgedNow, before: readonly (string | null)[]): void {
+    judged.string.serials.forEach((serial, slot) => {
+      if (serial === (before[slot] ?? null)) return;
+      resetSlot(judged.memory, judged.context, slot);
+      delete judged.evidence[slot + 1];
+      judged.dirty = true;
+    });
+  }
+
+  private makeLight(fromS: number, nowS: number): void {
+    const place = {
+      latitude: this.site.latitude,
+      longitude: this.site.longitude,
+      altitude: this.site.altitude,
+    };
+    this.lightUntilS = nowS + LIGHT_AFTER_S;
+    this.light = lightSpans(
+      (atS) => solarPositionQuick(atS * 1000, place).apparentElevation,
+      fromS,
+      this.lightUntilS,
+    );
+  }
+}
+
+/** Books the evidence of what changed; null where nothing did. */
+function taken(judged: JudgedNow, outcome: JudgeOutcome): Outcome | null {
+  if (outcome === UNCHANGED) return null;
+  for (const change of outcome.changes)
+    if (change.verdict === 'ok') delete judged.evidence[change.position];
+    else judged.evidence[change.position] = change.evidence;
+  judged.dirty = true;
+  return { judged, outcome };
+}

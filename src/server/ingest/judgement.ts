@@ -1,0 +1,334 @@
+import { randomUUID } from 'node:crypto';
+import type pg from 'pg';
+import { connect, database } from '../db/pools';
+import { isDatabaseAway } from '../errors';
+import { log } from '../log';
+import { framesAfter, inputsOf, judgementsOf, takeSites } from '../queries/judgement';
+import { judgedSite } from '../queries/judgement-contexts';
+import type { KnownLogger } from '../queries/ingest-loggers';
+import { CHANNELS, sendNotices } from '../queries/live-notices';
+import type { Batch } from './batch';
+import { expectedModules } from './expected-modules';
+import { JudgeWriter } from './judge-writer';
+import { SiteJudge, type Outcome } from './judge-site';
+import type { Notices } from './notices';
+import { eventTime, type Progress } from './progress';
+import type { Written } from './write-batch';
+
+const SWEEP_EVERY_MS = 10_000;
+const FRAMES_A_READ = 400;
+/** A string that was never judged is judged from so long ago on, seconds. */
+const FIRST_LOOK_BACK_S = 6 * 3600;
+
+export interface JudgementHost {
+  notices: Notices;
+  /** The loggers that this process serves. */
+  progress: () => { logger: KnownLogger; spokeAt: number; newestS: number }[];
+}
+
+/**
+ * Judges what ingest wrote, after COMMIT and on event time. A site is judged by one process at a time, under a lock
+ * that lives with this process's connection. The watermark is `string_judgement.frame_at`: whatever was durable and
+ * not judged when a process died is read back and judged in order by the next.
+ */
+export class Judgement {
+  readonly id = randomUUID();
+  private readonly sites = new Map<number, SiteJudge>();
+  /** Sites whose lock is held; they are in `sites` once they are read. */
+  private readonly held = new Set<number>();
+  private readonly stale = new Set<number>();
+  private readonly judgedInputs = new Map<number, number>();
+  private readonly refreshing = new Map<
+    number,
+    { current: Promise<void>; next?: Promise<void> | undefined }
+  >();
+  private readonly writer: JudgeWriter;
+  private lock: pg.Client | undefined;
+  private timer: NodeJS.Timeout | undefined;
+  private turn: Promise<void> = Promise.resolve();
+  private stopping = false;
+  private readonly startedS = Math.floor(Date.now() / 1000);
+  private readonly lastServedS = new Map<number, number>();
+
+  constructor(private readonly host: JudgementHost) {
+    this.writer = new JudgeWriter({
+      lost: (siteIds) => {
+        for (const id of siteIds) {
+          this.forget(id);
+          this.stale.add(id);
+        }
+      },
+      heard: (siteIds) => {
+        for (const id of siteIds) this.reload(id);
+      },
+    });
+  }
+
+  start(): void {
+    // reading sites back may take a while: loggers need not wait for it
+    void this.enqueue(() => this.takeFreeSites());
+    this.timer = setInterval(() => void this.enqueue(() => this.sweep()), SWEEP_EVERY_MS);
+  }
+
+  async stop(): Promise<void> {
+    this.stopping = true;
+    clearInterval(this.timer);
+    await this.turn;
+    await Promise.all([...this.refreshing.values()].map((r) => r.next ?? r.current));
+    for (const site of this.sites.values()) this.writer.checkpoint(site, true);
+    await this.writer.stop();
+    await this.lock?.end();
+  }
+
+  /** The plant or its commands changed, or another process wrote frames: reads the site again. */
+  reload(siteId: number): void {
+    void this.refresh(siteId);
+  }
+
+  /** After COMMIT: judges the frames of a batch and tells what is new. */
+  async written(batch: Batch, written: Written): Promise<void> {
+    for (const siteId of written.contexts) await this.refresh(siteId);
+    const outcomes: { site: SiteJudge; outcome: Outcome }[] = [];
+    const elsewhere = new Set<number>();
+    for (const row of batch.frames) {
+      const site = this.sites.get(row.siteId);
+      if (!site) {
+        if (!this.held.has(row.siteId)) elsewhere.add(row.siteId);
+        continue;
+      }
+      if (site.catchingUp) {
+        site.missed = true;
+        continue;
+      }
+      const outcome = site.frame(row.stringId, {
+        atS: row.at,
+        state: row.state,
+        voltageOut: row.voltage,
+        voltageIn: row.voltageIn ?? undefined,
+      });
+      if (outcome) outcomes.push({ site, outcome });
+    }
+    if (outcomes.length > 0) {
+      for (const { outcome } of outcomes) written.strings.add(outcome.judged.string.id);
+      for (const { site } of outcomes) written.sites.add(site.site.id);
+      await this.writer.write(outcomes);
+    }
+    this.host.notices.changed(written.sites, written.strings);
+    if (elsewhere.size > 0)
+      await sendNotices(
+        database('ingest'),
+        [...elsewhere].map((site) => ({
+          channel: CHANNELS.written,
+          payload: JSON.stringify({ site, by: this.id }),
+        })),
+      );
+  }
+
+  /** One thing at a time: reading sites, sweeping. */
+  private enqueue(work: () => Promise<void>): Promise<void> {
+    this.turn = this.turn.then(() => this.guarded(work));
+    return this.turn;
+  }
+
+  private async guarded(work: () => Promise<void>): Promise<void> {
+    try {
+      await work();
+    } catch (error) {
+      if (isDatabaseAway(error)) log.warn('judgement waits: the database is away');
+      else log.error({ error }, 'judgement failed; it is tried again with the next sweep');
+    }
+  }
+
+  private async takeFreeSites(): Promise<void> {
+    if (!this.lock) {
+      const lock = await connect('ingest');
+      lock.once('end', () => {
+        if (this.lock !== lock) return;
+        // without the connection the locks are gone: another process may judge these sites now
+        this.lock = undefined;
+        for (const id of [...this.sites.keys()]) this.forget(id);
+        this.held.clear();
+      });
+      this.lock = lock;
+    }
+    const { lock } = this;
+    for (const id of await takeSites(lock, [...this.held])) this.held.add(id);
+    for (const id of this.held) if (!this.sites.has(id) && !this.stopping) await this.read(id);
+  }
+
+  /** Reads a site's judgement back and catches up with its frames. */
+  private async read(siteId: number): Promise<void> {
+    const db = database('ingest');
+    const site = await judgedSite(db, siteId);
+    if (!site) {
+      this.held.delete(siteId);
+      return;
+    }
+    const nowS = Math.floor(Date.now() / 1000);
+    const judge = new SiteJudge(site, await judgementsOf(db, siteId), nowS);
+    judge.catchingUp = true;
+    this.sites.set(siteId, judge);
+    await this.catchUp(judge, nowS);
+    this.writer.checkpoint(judge, true);
+    await this.writer.flush();
+  }
+
+  private forget(siteId: number): void {
+    const judge = this.sites.get(siteId);
+    if (judge) judge.dead = true;
+    this.sites.delete(siteId);
+  }
+
+  /** Reads a site's plant and commands again, judges what was not judged, and sweeps. One at a time for each site. */
+  private refresh(siteId: number): Promise<void> {
+    const waiting = this.refreshing.get(siteId);
+    if (waiting?.next) return waiting.next;
+    const run = async (): Promise<void> => {
+      const judge = this.sites.get(siteId);
+      if (!judge || judge.dead) return;
+      const site = await judgedSite(database('ingest'), siteId);
+      if (!site) {
+        this.forget(siteId);
+        return;
+      }
+      const nowS = Math.floor(Date.now() / 1000);
+      judge.setSite(site, nowS);
+      if (!judge.catchingUp) await this.catchUp(judge, nowS);
+      await this.sweepSite(judge, nowS);
+    };
+    const entry = waiting ?? { current: Promise.resolve() };
+    const next = entry.current.then(() => {
+      entry.next = undefined;
+      entry.current = this.guarded(run);
+      return entry.current;
+    });
+    entry.next = next;
+    this.refreshing.set(siteId, entry);
+    return next;
+  }
+
+  /** Judges the frames that are durable and not judged, each string's in order. */
+  private async catchUp(judge: SiteJudge, nowS: number): Promise<void> {
+    judge.catchingUp = true;
+    try {
+      do {
+        judge.missed = false;
+        await this.judgeStored(judge, nowS);
+      } while (judge.missed && !this.stopping);
+    } catch (error) {
+      // half caught up it must not judge what comes next: it is read again from its watermark
+      this.forget(judge.site.id);
+      this.stale.add(judge.site.id);
+      throw error;
+    }
+    judge.catchingUp = false;
+  }
+
+  private async judgeStored(judge: SiteJudge, nowS: number): Promise<void> {
+    const firstLook = nowS - FIRST_LOOK_BACK_S;
+    const behind = new Map([...judge.strings.values()].map((j) => [j.string.id, j.memory.atS || firstLook]));
+    while (behind.size > 0 && !this.stopping && !judge.dead) {
+      const frames = await framesAfter(
+        database('ingest'),
+        [...behind].map(([stringId, atS]) => ({ stringId, atS })),
+        FRAMES_A_READ,
+      );
+      const read = new Map<number, number>();
+      const outcomes: { site: SiteJudge; outcome: Outcome }[] = [];
+      for (const f of frames) {
+        read.set(f.stringId, (read.get(f.stringId) ?? 0) + 1);
+        behind.set(f.stringId, f.at);
+        const outcome = judge.frame(f.stringId, {
+          atS: f.at,
+          state: f.state,
+          voltageOut: f.voltage,
+          voltageIn: f.voltageIn ?? undefined,
+        });
+        if (outcome) outcomes.push({ site: judge, outcome });
+      }
+      await this.keep(judge, outcomes);
+      for (const id of [...behind.keys()]) if ((read.get(id) ?? 0) < FRAMES_A_READ) behind.delete(id);
+    }
+  }
+
+  private async keep(
+    judge: SiteJudge,
+    outcomes: readonly { site: SiteJudge; outcome: Outcome }[],
+  ): Promise<void> {
+    if (outcomes.length === 0) return;
+    await this.writer.write(outcomes);
+    this.host.notices.changed(
+      [judge.site.id],
+      outcomes.map((o) => o.outcome.judged.string.id),
+    );
+  }
+
+  private async sweep(): Promise<void> {
+    await this.takeFreeSites();
+    for (const id of [...this.stale]) {
+      this.stale.delete(id);
+      if (this.held.has(id)) await this.read(id);
+    }
+    const nowS = Math.floor(Date.now() / 1000);
+    for (const judge of [...this.sites.values()]) {
+      if (this.stopping) return;
+      if (judge.dead || judge.catchingUp) continue;
+      await this.sweepSite(judge, nowS);
+      this.writer.checkpoint(judge, false);
+    }
+    await this.writer.flush();
+  }
+
+  private async sweepSite(judge: SiteJudge, nowS: number): Promise<void> {
+    const progress = this.progressOf(nowS);
+    const outcomes: { site: SiteJudge; outcome: Outcome }[] = [];
+    for (const judged of [...judge.strings.values()]) {
+      const atS = eventTime(progress(judged.string.loggerId), judge.reportIntervalS, nowS);
+      if (atS === null) continue;
+      const outcome = judge.sweep(judged, atS);
+      if (outcome) outcomes.push({ site: judge, outcome });
+    }
+    outcomes.push(...(await this.judgeInputs(judge)));
+    await this.keep(judge, outcomes);
+  }
+
+  /** Input readings that came since the last sweep. */
+  private async judgeInputs(judge: SiteJudge): Promise<{ site: SiteJudge; outcome: Outcome }[]> {
+    const outcomes: { site: SiteJudge; outcome: Outcome }[] = [];
+    const fresh = (await inputsOf(database('ingest'), judge.site.id)).filter(
+      (i) => i.atS > (this.judgedInputs.get(i.inputId) ?? 0),
+    );
+    if (fresh.length === 0) return outcomes;
+    const modules = await expectedModules(judge);
+    const byInput = new Map<number, number>();
+    for (const { string } of judge.strings.values())
+      byInput.set(string.inputId, (byInput.get(string.inputId) ?? 0) + 1);
+    for (const input of fresh) {
+      this.judgedInputs.set(input.inputId, input.atS);
+      for (const judged of judge.strings.values()) {
+        if (judged.string.inputId !== input.inputId) continue;
+        const outcome = judge.input(judged, {
+          atS: input.atS,
+          voltageV: input.voltageV,
+          currentA: input.currentA,
+          strings: byInput.get(input.inputId) ?? 1,
+          module: modules.get(judged.string.id) ?? null,
+        });
+        if (outcome) outcomes.push({ site: judge, outcome });
+      }
+    }
+    return outcomes;
+  }
+
+  /** How far the reports of each logger are known to have come. */
+  private progressOf(nowS: number): (loggerId: number | null) => Progress {
+    const served = new Map(this.host.progress().map((p) => [p.logger.id, p]));
+    for (const id of served.keys()) this.lastServedS.set(id, nowS);
+    return (loggerId) => {
+      const p = loggerId === null ? undefined : served.get(loggerId);
+      const lastS = loggerId === null ? undefined : this.lastServedS.get(loggerId);
+      if (p) return { served: true, spokeS: Math.floor(p.spokeAt / 1000), newestS: p.newestS };
+      return { served: false, sinceS: lastS ?? this.startedS };
+    };
+  }
+}

@@ -1,0 +1,187 @@
+import { setTimeout as sleep } from 'node:timers/promises';
+import type pg from 'pg';
+import { connect } from '../db/pools';
+import { isDatabaseAway } from '../errors';
+import { log } from '../log';
+import type { FrameRow } from '../queries/ingest-rows';
+import { takeBatch, type Batch, type Item, type Work } from './batch';
+import { Days, writeBatch, type Written } from './write-batch';
+
+export interface LaneHooks {
+  /** After COMMIT and the acknowledgements. What it gives is waited for before the next batch. */
+  written: (batch: Batch, written: Written) => Promise<void> | void;
+  /** Readings left the queue. */
+  relieved: (readings: number) => void;
+  /** The database does not answer; called at every try. */
+  away: () => void;
+}
+
+const RETRY_MS = { first: 200, max: 3000 };
+const DAYS_FRESH_S = 60;
+const NO_PARTITION = '23514';
+
+const codeOf = (error: unknown): string =>
+  error instanceof Error && 'code' in error && typeof error.code === 'string' ? error.code : '';
+
+/**
+ * Writes what waits, one batch after the other on a connection of its own. Sites are spread over lanes by number, so
+ * no two batches in flight touch one row. While the database is away the queue keeps everything and nothing is
+ * acknowledged; a batch that failed is written again as a whole, which changes nothing that was committed.
+ */
+export class Lane {
+  private readonly queue: Item[] = [];
+  private running: Promise<void> | undefined;
+  private client: pg.Client | undefined;
+  private days = new Days();
+  private daysAtS = 0;
+  private stopping = false;
+  private cut = new AbortController();
+
+  constructor(private readonly hooks: LaneHooks) {}
+
+  get waiting(): number {
+    return this.queue.length;
+  }
+
+  add(item: Item): void {
+    if (this.stopping) return;
+    this.queue.push(item);
+    this.running ??= this.run().finally(() => {
+      this.running = undefined;
+    });
+  }
+
+  /** Finishes what waits, unless the database is away: then loggers keep it, for nothing was acknowledged. */
+  async stop(): Promise<void> {
+    this.stopping = true;
+    this.cut.abort();
+    await this.running;
+    await this.client?.end();
+    this.client = undefined;
+  }
+
+  private async run(): Promise<void> {
+    while (this.queue.length > 0) {
+      const batch = takeBatch(this.queue);
+      const written = await this.writeUntilDone(batch);
+      if (!written) return;
+      let readings = 0;
+      for (const item of batch.finished) {
+        readings += item.readings;
+        if (item.fault === null) item.written();
+        else item.refused(item.fault);
+      }
+      this.hooks.relieved(readings);
+      try {
+        await this.hooks.written(batch, written);
+      } catch (error) {
+        log.error({ error }, 'what follows a written batch failed');
+      }
+    }
+  }
+
+  /** Undefined: told to stop while the database was away. */
+  private async writeUntilDone(batch: Batch): Promise<Written | undefined> {
+    let waitMs = RETRY_MS.first;
+    let tries = 0;
+    for (;;) {
+      try {
+        return await this.write(batch);
+      } catch (error) {
+        const partition = codeOf(error) === NO_PARTITION && tries++ < 2;
+        if (partition) {
+          this.daysAtS = 0;
+          continue;
+        }
+        if (!isDatabaseAway(error) && codeOf(error) !== '57014') return this.writeOneByOne(batch);
+        log.warn(
+          { error: error instanceof Error ? error.message : String(error) },
+          'readings wait: the database is away',
+        );
+      }
+      this.hooks.away();
+      await this.dropClient();
+      // stop() cuts the wait short; that is no failure
+      await sleep(waitMs, undefined, { signal: this.cut.signal }).catch(() => undefined);
+      if (this.stopping) return undefined;
+      waitMs = Math.min(RETRY_MS.max, waitMs * 2);
+    }
+  }
+
+  private async write(batch: Batch): Promise<Written> {
+    const nowS = Math.floor(Date.now() / 1000);
+    this.client ??= await connect('ingest');
+    if (nowS - this.daysAtS > DAYS_FRESH_S) {
+      await this.days.refresh(this.client, nowS);
+      this.daysAtS = nowS;
+    }
+    return writeBatch(this.client, batch, this.days, nowS);
+  }
+
+  private async dropClient(): Promise<void> {
+    const { client } = this;
+    this.client = undefined;
+    // the connection is broken already: whatever its end says is of no use
+    await client?.end().catch(() => undefined);
+  }
+
+  /** The database refuses the batch as a whole: finds the rows that it refuses, and writes the others. */
+  private async writeOneByOne(batch: Batch): Promise<Written | undefined> {
+    const all: Written = { sites: new Set(), strings: new Set(), contexts: new Set() };
+    for (const part of parts(batch)) {
+      try {
+        const written = await this.write(part);
+        for (const key of ['sites', 'strings', 'contexts'] as const)
+          for (const id of written[key]) all[key].add(id);
+      } catch (error) {
+        if (isDatabaseAway(error)) return this.writeUntilDone(batch);
+        const reason = error instanceof Error ? error.message : String(error);
+        log.error({ error }, 'the database refuses a reading');
+        for (const item of [...batch.finished, ...this.queue])
+          if (holds(item.work, part)) item.fault = reason;
+        const refused = new Set<FrameRow>(part.frames);
+        batch.frames = batch.frames.filter((f) => !refused.has(f));
+      }
+    }
+    return all;
+  }
+}
+
+const emptyLike = (batch: Batch): Batch => ({
+  ...batch,
+  frames: [],
+  inputs: [],
+  inverters: [],
+  weather: [],
+  heard: [],
+  commands: [],
+  traces: [],
+  gateways: [],
+  finished: [],
+});
+
+function* parts(batch: Batch): Generator<Batch> {
+  const empty = emptyLike(batch);
+  for (const row of batch.gateways) yield { ...empty, gateways: [row] };
+  for (const row of batch.frames) yield { ...empty, frames: [row] };
+  for (const row of batch.inputs) yield { ...empty, inputs: [row] };
+  for (const row of batch.inverters) yield { ...empty, inverters: [row] };
+  for (const row of batch.weather) yield { ...empty, weather: [row] };
+  for (const row of batch.heard) yield { ...empty, heard: [row] };
+  for (const row of batch.commands) yield { ...empty, commands: [row] };
+  for (const row of batch.traces) yield { ...empty, traces: [row] };
+}
+
+function holds(work: Work, part: Batch): boolean {
+  const rows: readonly unknown[] = work.rows;
+  const sought: readonly unknown[] = [
+    ...part.frames,
+    ...part.inputs,
+    ...part.inverters,
+    ...part.weather,
+    ...part.heard,
+    ...part.commands,
+    ...part.traces,
+  ];
+  return sought.some((row) => rows.includes(row));
+}

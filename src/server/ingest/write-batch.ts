@@ -1,0 +1,103 @@
+import type pg from 'pg';
+import { ensureDays, parkFrames, partitionDays, writeFrames } from '../queries/ingest-frames';
+import { writeHeard } from '../queries/ingest-heard';
+import {
+  learnGateways,
+  writeCommand,
+  writeInputs,
+  writeInverters,
+  writeTrace,
+  writeWeather,
+} from '../queries/ingest-reports';
+import type { Batch } from './batch';
+
+/** Raw readings are kept for so many days; older ones have no place among them. */
+export const RAW_KEPT_DAYS = 90;
+/** Quarters that closed this long ago may have been rolled up: the job rolls up after 120 s. */
+export const ROLLED_UP_AFTER_S = 90;
+const DAY_S = 86_400;
+
+const dayOf = (epochS: number): string =>
+  new Date(epochS * 1000).toISOString().slice(0, 10).replaceAll('-', '');
+
+/** The days that have partitions, as far as this connection knows. */
+export class Days {
+  private known = new Set<string>();
+
+  /** Makes today's neighbours where the job has not yet, and learns which days there are. */
+  async refresh(client: pg.ClientBase, nowS: number): Promise<void> {
+    await ensureDays(client, new Date((nowS - DAY_S) * 1000), new Date((nowS + DAY_S) * 1000));
+    this.known = await partitionDays(client);
+  }
+
+  has(epochS: number): boolean {
+    return this.known.has(dayOf(epochS));
+  }
+
+  /** Makes the partitions of these times where they lie within what is kept. */
+  async ensure(client: pg.ClientBase, times: readonly number[], nowS: number): Promise<void> {
+    const missing = new Map<string, number>();
+    for (const at of times) if (!this.has(at)) missing.set(dayOf(at), at);
+    for (const at of missing.values())
+      if (at > nowS - RAW_KEPT_DAYS * DAY_S)
+        await ensureDays(client, new Date(at * 1000), new Date(at * 1000));
+    if (missing.size > 0) this.known = await partitionDays(client);
+  }
+}
+
+export interface Written {
+  /** Sites where something other than frames changed, and strings whose frames or traces are new. */
+  sites: Set<number>;
+  strings: Set<number>;
+  /** Sites whose commands or heard units changed: what judgement rests on must be read again. */
+  contexts: Set<number>;
+}
+
+/**
+ * Makes a batch durable, statement by statement, each one committed by itself and harmless when repeated: after an
+ * error the whole batch may be written again. Frames of days without a partition are parked for the merge job.
+ */
+export async function writeBatch(
+  client: pg.ClientBase,
+  batch: Batch,
+  days: Days,
+  nowS: number,
+): Promise<Written> {
+  const written: Written = { sites: new Set(), strings: new Set(), contexts: new Set() };
+  const { inputs, inverters, weather } = batch;
+  if (batch.gateways.length > 0) await learnGateways(client, batch.gateways);
+  if (batch.frames.length > 0) {
+    const present = batch.frames.filter((f) => days.has(f.at));
+    if (present.length < batch.frames.length)
+      await parkFrames(
+        client,
+        batch.frames.filter((f) => !days.has(f.at)),
+      );
+    if (present.length > 0) await writeFrames(client, present, new Date((nowS - ROLLED_UP_AFTER_S) * 1000));
+    for (const f of present) written.strings.add(f.stringId);
+  }
+  const times = [...inputs, ...inverters, ...weather].map((r) => r.at);
+  if (times.length > 0) await days.ensure(client, times, nowS);
+  const kept = <T extends { at: number }>(rows: readonly T[]): T[] => rows.filter((r) => days.has(r.at));
+  if (inputs.length > 0) await writeInputs(client, kept(inputs));
+  if (inverters.length > 0)
+    for (const site of await writeInverters(client, kept(inverters))) written.sites.add(site);
+  if (weather.length > 0) await writeWeather(client, kept(weather));
+  for (const r of [...inputs, ...inverters, ...weather]) written.sites.add(r.siteId);
+  if (batch.heard.length > 0)
+    for (const { siteId, stringId } of await writeHeard(client, batch.heard)) {
+      written.contexts.add(siteId);
+      written.sites.add(siteId);
+      if (stringId !== null) written.strings.add(stringId);
+    }
+  for (const command of batch.commands)
+    if (await writeCommand(client, command)) {
+      written.contexts.add(command.siteId);
+      written.sites.add(command.siteId);
+    }
+  for (const trace of batch.traces) {
+    await writeTrace(client, trace);
+    written.strings.add(trace.stringId);
+  }
+  return written;
+}

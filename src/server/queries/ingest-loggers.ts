@@ -1,0 +1,121 @@
+import type { Knex } from 'knex';
+
+/** Loggers as ingest sees them: who may speak, which process serves one, what was refused. */
+
+/** How long a lease holds without being renewed, seconds. */
+export const LEASE_S = 30;
+
+export interface KnownLogger {
+  id: number;
+  siteId: number;
+  organisationId: number;
+  serial: string;
+}
+
+/** The logger that a token's hash stands for. `ended`: the token was good once; the attempt counts at the logger. */
+export async function loggerOfToken(
+  db: Knex,
+  hash: Buffer,
+): Promise<(KnownLogger & { ended: boolean }) | undefined> {
+  const { rows } = await db.raw<{ rows: (KnownLogger & { ended: boolean })[] }>(
+    `select l.id, l.site_id as "siteId", s.organisation_id as "organisationId", l.serial,
+       t.ended_at is not null and t.ended_at <= now() as ended
+     from ingest_token t join logger l on l.id = t.logger_id join site s on s.id = l.site_id where t.hash = ?`,
+    [hash],
+  );
+  return rows[0];
+}
+
+/**
+ * Takes the lease of a logger for this process, from whichever process has it: the newer connection wins. The
+ * notice tells the other process to let go.
+ */
+export async function takeLease(
+  db: Knex,
+  lease: { loggerId: number; process: string; address: string; firmware: string },
+): Promise<void> {
+  await db.raw(
+    `with taken as (
+       update logger set leased_by = :process, leased_until = now() + make_interval(secs => :lease),
+         connected_at = now(), last_spoke_at = now(), last_address = :address, firmware = :firmware
+       where id = :loggerId returning id, site_id, serial),
+     told as (
+       insert into event (at, organisation_id, site_id, kind, detail)
+       select now(), s.organisation_id, s.id, 'logger_connected', jsonb_build_object('logger', taken.serial)
+       from taken join site s on s.id = taken.site_id
+       where (select e.kind from event e where e.site_id = s.id and e.kind in ('logger_connected', 'logger_lost')
+                and e.detail ->> 'logger' = taken.serial order by e.id desc limit 1) is distinct from 'logger_connected'
+       returning site_id)
+     select pg_notify('leased', json_build_object('logger', id, 'by', :process::text)::text),
+       pg_notify('changed', json_build_object('sites', json_build_array(site_id))::text) from taken`,
+    { ...lease, lease: LEASE_S },
+  );
+}
+
+/** Renews the leases of this process; gives back the loggers that it still has. */
+export async function renewLeases(
+  db: Knex,
+  process: string,
+  spoke: readonly { loggerId: number; spokeAt: Date }[],
+): Promise<number[]> {
+  const { rows } = await db.raw<{ rows: { id: number }[] }>(
+    `update logger set leased_until = now() + make_interval(secs => ?), last_spoke_at = greatest(last_spoke_at, x.spoke)
+     from unnest(?::int4[], ?::timestamptz[]) x(logger_id, spoke)
+     where logger.id = x.logger_id and leased_by = ? returning logger.id`,
+    [LEASE_S, spoke.map((s) => s.loggerId), spoke.map((s) => s.spokeAt.toISOString()), process],
+  );
+  return rows.map((r) => r.id);
+}
+
+export async function releaseLeases(db: Knex, process: string, loggerIds: readonly number[]): Promise<void> {
+  await db.raw(
+    `update logger set leased_by = null, leased_until = now() where leased_by = ? and id = any (?::int4[])`,
+    [process, [...loggerIds]],
+  );
+}
+
+/** Loggers that were connected and are served by nobody for `graceS`: said once. Gives the sites concerned. */
+export async function tellLostLoggers(db: Knex, graceS: number): Promise<number[]> {
+  const { rows } = await db.raw<{ rows: { siteId: number }[] }>(
+    `insert into event (at, organisation_id, site_id, kind, detail)
+     select coalesce(l.last_spoke_at, now()), s.organisation_id, s.id, 'logger_lost', jsonb_build_object('logger', l.serial)
+     from logger l join site s on s.id = l.site_id
+     where l.leased_until < now() - make_interval(secs => ?)
+       and (select e.kind from event e where e.site_id = s.id and e.kind in ('logger_connected', 'logger_lost')
+              and e.detail ->> 'logger' = l.serial order by e.id desc limit 1) = 'logger_connected'
+     returning site_id as "siteId"`,
+    [graceS],
+  );
+  return rows.map((r) => r.siteId);
+}
+
+export interface Refusal {
+  loggerId: number;
+  count: number;
+  /** The newest one. */
+  at: Date;
+  field: string;
+  reason: string;
+}
+
+/** Adds up what was refused, where people can see it. */
+export async function countRefusals(db: Knex, refusals: readonly Refusal[]): Promise<void> {
+  await db.raw(
+    `update logger set refused_count = refused_count + x.n, last_refusal = x.last
+     from unnest(?::int4[], ?::int8[], ?::jsonb[]) x(logger_id, n, last) where logger.id = x.logger_id`,
+    [
+      refusals.map((r) => r.loggerId),
+      refusals.map((r) => r.count),
+      refusals.map((r) => JSON.stringify({ at: r.at.toISOString(), field: r.field, reason: r.reason })),
+    ],
+  );
+}
+
+/** Whether a roll call is open at each of these sites. */
+export async function openRollCalls(db: Knex, siteIds: readonly number[]): Promise<Set<number>> {
+  const { rows } = await db.raw<{ rows: { siteId: number }[] }>(
+    `select site_id as "siteId" from roll_call where stopped_at is null and site_id = any (?::int4[])`,
+    [[...siteIds]],
+  );
+  return new Set(rows.map((r) => r.siteId));
+}

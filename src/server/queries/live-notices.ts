@@ -1,0 +1,65 @@
+import type { Knex } from 'knex';
+
+/**
+ * What processes tell each other: NOTIFY with the database's own numbers, never data. A notice is a wake-up; whoever
+ * is woken reads for itself. It leaves when the transaction commits.
+ */
+export const CHANNELS = {
+  /** {sites: id[], strings: id[]}: something about them is new. */
+  changed: 'changed',
+  /** Site id: a roll call was started or stopped there. */
+  rollCall: 'roll_call',
+  /** Site id: its as-built, its stage, its times or its types were changed. */
+  asBuilt: 'as_built',
+  /** {logger, by}: a process took a logger's lease. */
+  leased: 'leased',
+  /** {site, by}: frames or reports of a site were written by a process that may not be the one that judges it. */
+  written: 'written',
+} as const;
+
+export interface Changed {
+  sites: number[];
+  strings: number[];
+}
+
+/** A notice's payload must stay below 8000 bytes. */
+const IDS_A_NOTICE = 600;
+
+/** The payloads that tell of these changes. */
+export function changedPayloads(changed: { sites: Iterable<number>; strings: Iterable<number> }): string[] {
+  const sites = [...changed.sites];
+  const strings = [...changed.strings];
+  const payloads: string[] = [];
+  for (let i = 0; i < Math.max(sites.length, strings.length); i += IDS_A_NOTICE)
+    payloads.push(
+      JSON.stringify({
+        sites: sites.slice(i, i + IDS_A_NOTICE),
+        strings: strings.slice(i, i + IDS_A_NOTICE),
+      }),
+    );
+  return payloads;
+}
+
+export async function sendNotices(
+  db: Knex,
+  notices: readonly { channel: string; payload: string }[],
+): Promise<void> {
+  if (notices.length === 0) return;
+  await db.raw('select pg_notify(c, p) from unnest(?::text[], ?::text[]) x(c, p)', [
+    notices.map((n) => n.channel),
+    notices.map((n) => n.payload),
+  ]);
+}
+
+/** Tells /live that something at a site is new: call it in the transaction that writes it. */
+export async function tellSiteChanged(tx: Knex, siteId: number): Promise<void> {
+  await tx.raw('select pg_notify(?, ?)', [
+    CHANNELS.changed,
+    JSON.stringify({ sites: [siteId], strings: [] }),
+  ]);
+}
+
+/** Tells ingest and judgement that a site's as-built has changed: loggers then get a new roster. */
+export async function tellAsBuiltChanged(tx: Knex, siteId: number): Promise<void> {
+  await tx.raw('select pg_notify(?, ?)', [CHANNELS.asBuilt, String(siteId)]);
+}
