@@ -55,8 +55,11 @@ export function refraction(elevation: number, pressure: number, temperatureAir: 
   );
 }
 
-/** A topocentric direction of the sun, degrees. */
-function direction(hourAngle: number, declination: number, latitude: number) {
+/**
+ * Elevation and azimuth of a body at an hour angle (west of south positive) and a declination, degrees (Duffie & Beckman
+ * eq. 1.6.5 and 1.6.6).
+ */
+export function directionInSky(hourAngle: number, declination: number, latitude: number) {
   const sinLatitude = sinDeg(latitude);
   const cosLatitude = cosDeg(latitude);
   const elevation = asinDeg(
@@ -124,7 +127,7 @@ export function solarPosition(epochMs: number, place: Place, air: Air = {}): Sol
   const shift = Math.atan2(-x * Math.sin(parallax) * sinDeg(hourAngle), across);
   const declination = atan2Deg((sinDeg(sun.declination) - y * Math.sin(parallax)) * Math.cos(shift), across);
 
-  const seen = direction(hourAngle - shift / RADIANS, declination, place.latitude);
+  const seen = directionInSky(hourAngle - shift / RADIANS, declination, place.latitude);
   return withRefraction(
     seen.elevation,
     seen.azimuth,
