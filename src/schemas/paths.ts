@@ -9,7 +9,6 @@ export const paths = {
   shutdown: () => '/shutdown',
   customer: (site: string) => `/my-site/${site}`,
   customerHome: () => '/my-site',
-  account: () => '/account',
   status: () => '/status',
   api: {
     signIn: () => '/api/sign-in',
@@ -25,6 +24,7 @@ export const paths = {
     stringHistory: (string: string) => `/api/strings/${string}/history`,
     stringHistoryCsv: (string: string) => `/api/strings/${string}/history.csv`,
     stringUnits: (string: string) => `/api/strings/${string}/units`,
+    stringUnitsCsv: (string: string) => `/api/strings/${string}/units.csv`,
     rollCall: (site: string) => `/api/sites/${site}/roll-call`,
     rollCallCsv: (site: string) => `/api/sites/${site}/roll-call/units.csv`,
     rollCallStop: (site: string) => `/api/sites/${site}/roll-call/stop`,

@@ -33,7 +33,6 @@ export const ROUTES: readonly Route[] = [
   get('index.astro', 'fleet.read', 'nothing', () => '/'),
   get('shutdown.astro', 'shutdown.read', 'nothing', () => '/shutdown'),
   get('status.astro', 'status.read', 'nothing', () => '/status'),
-  get('account.astro', 'own_account.use', 'nothing', () => '/account'),
   get('commissioning/index.astro', 'roll_call.read', 'nothing', () => '/commissioning'),
   get(
     'commissioning/[site]/roll-call.astro',
