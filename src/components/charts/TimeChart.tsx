@@ -1,0 +1,198 @@
+import type { ECharts } from 'echarts/core';
+import {
+  lazy,
+  Suspense,
+  useCallback,
+  useEffect,
+  useRef,
+  useState,
+  type KeyboardEvent,
+  type ReactNode,
+} from 'react';
+import type { Span } from './Canvas';
+import { ChartSketch } from './ChartSketch';
+import { ChartTable } from './ChartTable';
+import { toWall } from './local-time';
+import type { ChartModel } from './model';
+import { readout } from './options';
+
+const Canvas = lazy(() => import('./Canvas'));
+
+interface Props {
+  model: ChartModel;
+  height?: number;
+  /** Where the same data comes as CSV. */
+  csvHref?: string;
+  /** Name of the picture, without ending. */
+  fileName: string;
+  /** The part in sight has changed; null: all of it. Fetch finer data for it. */
+  onZoom?: (span: Span | null) => void;
+  /** Controls at the left of the chart's own. */
+  controls?: ReactNode;
+}
+
+/** True once the element is within a screen's height of the window. */
+function useNear(ref: { current: HTMLElement | null }): boolean {
+  const [near, setNear] = useState(false);
+  useEffect(() => {
+    const element = ref.current;
+    if (!element || near) return;
+    const watch = new IntersectionObserver(
+      (entries) => entries.some((e) => e.isIntersecting) && setNear(true),
+      {
+        rootMargin: '100% 0px',
+      },
+    );
+    watch.observe(element);
+    return () => watch.disconnect();
+  }, [ref, near]);
+  return near;
+}
+
+function useNarrow(ref: { current: HTMLElement | null }): boolean {
+  const [narrow, setNarrow] = useState(false);
+  useEffect(() => {
+    const element = ref.current;
+    if (!element) return;
+    const watch = new ResizeObserver(() => setNarrow(element.clientWidth < 520));
+    watch.observe(element);
+    return () => watch.disconnect();
+  }, [ref]);
+  return narrow;
+}
+
+const TOOL = 'target rounded px-2 text-sm text-ink-2 underline-offset-2 hover:text-ink hover:underline';
+
+/**
+ * The one chart over time: crosshair with a readout, zoom, gaps as gaps, nights, expected band, marks, the figures as a
+ * table, PNG and CSV. Keys while it has the focus: t table, ← → crosshair, + − 0 zoom.
+ */
+export function TimeChart({ model, height = 300, csvHref, fileName, onZoom, controls }: Props) {
+  const figure = useRef<HTMLElement>(null);
+  const chart = useRef<ECharts | null>(null);
+  const [asTable, setAsTable] = useState(false);
+  const [said, setSaid] = useState('');
+  const cursor = useRef<number | null>(null);
+  const near = useNear(figure);
+  const narrow = useNarrow(figure);
+  const ready = useCallback((instance: ECharts) => {
+    chart.current = instance;
+  }, []);
+  const zoomed = useCallback((span: Span | null) => onZoom?.(span), [onZoom]);
+
+  const zoomBy = (factor: number | null) => {
+    const instance = chart.current;
+    if (!instance || instance.isDisposed()) return;
+    const zoom = (instance.getOption() as { dataZoom?: { start?: number; end?: number }[] }).dataZoom?.[0];
+    const [start, end] = [zoom?.start ?? 0, zoom?.end ?? 100];
+    const middle = (start + end) / 2;
+    const half = factor === null ? 50 : Math.min(50, Math.max(0.5, ((end - start) / 2) * factor));
+    const from = factor === null ? 0 : Math.min(100 - 2 * half, Math.max(0, middle - half));
+    instance.dispatchAction({ type: 'dataZoom', start: from, end: from + 2 * half });
+  };
+  const moveCursor = (step: number) => {
+    const line = model.lines[0];
+    const instance = chart.current;
+    if (!line || line.at.length === 0 || !instance) return;
+    const last = line.at.length - 1;
+    const next = cursor.current === null ? last : Math.min(last, Math.max(0, cursor.current + step));
+    cursor.current = next;
+    const at = line.at[next] ?? 0;
+    const x = instance.convertToPixel({ xAxisIndex: 0 }, toWall(at, model.timeZone));
+    instance.dispatchAction({ type: 'showTip', x, y: height / 2 });
+    const r = readout(model, at);
+    setSaid(
+      `${r.title}: ${r.rows.map(([name, value]) => `${name} ${value}`).join(', ')}. ${r.marks.join('. ')}`,
+    );
+  };
+  const onKeyDown = (event: KeyboardEvent) => {
+    if (event.target instanceof HTMLElement && event.target.matches('input, select, textarea')) return;
+    if (event.ctrlKey || event.metaKey || event.altKey) return;
+    const steps: Record<string, () => void> = {
+      t: () => setAsTable((now) => !now),
+      ArrowLeft: () => moveCursor(-1),
+      ArrowRight: () => moveCursor(1),
+      PageUp: () => moveCursor(-20),
+      PageDown: () => moveCursor(20),
+      '+': () => zoomBy(0.5),
+      '-': () => zoomBy(2),
+      '0': () => zoomBy(null),
+    };
+    const step = steps[event.key];
+    if (!step || (asTable && event.key !== 't')) return;
+    event.preventDefault();
+    step();
+  };
+  const savePicture = () => {
+    const instance = chart.current;
+    if (!instance || instance.isDisposed()) return;
+    const link = document.createElement('a');
+    const ground = figure.current
+      ? getComputedStyle(figure.current).getPropertyValue('background-color')
+      : '#fff';
+    link.href = instance.getDataURL({
+      type: 'png',
+      pixelRatio: 2,
+      backgroundColor: ground,
+      excludeComponents: ['dataZoom'],
+    });
+    link.download = `${fileName}.png`;
+    link.click();
+  };
+
+  return (
+    <figure
+      ref={figure}
+      tabIndex={0}
+      aria-label={`${model.title}. Press t for the figures as a table, left and right for single values.`}
+      onKeyDown={onKeyDown}
+      className="bg-sheet"
+    >
+      <div className="flex flex-wrap items-center justify-between gap-x-4 gap-y-1">
+        <div className="flex flex-wrap items-center gap-x-4">{controls}</div>
+        <div className="no-print -mr-2 flex flex-wrap items-center">
+          {!asTable && (
+            <>
+              <button type="button" className={TOOL} aria-label="Zoom in" onClick={() => zoomBy(0.5)}>
+                +
+              </button>
+              <button type="button" className={TOOL} aria-label="Zoom out" onClick={() => zoomBy(2)}>
+                −
+              </button>
+              <button type="button" className={TOOL} onClick={() => zoomBy(null)}>
+                Whole
+              </button>
+            </>
+          )}
+          <button type="button" className={TOOL} aria-pressed={asTable} onClick={() => setAsTable(!asTable)}>
+            {asTable ? 'Curve' : 'Table'}
+          </button>
+          {!asTable && (
+            <button type="button" className={TOOL} onClick={savePicture}>
+              PNG
+            </button>
+          )}
+          {csvHref && (
+            <a href={csvHref} download className={`inline-flex items-center ${TOOL}`}>
+              CSV
+            </a>
+          )}
+        </div>
+      </div>
+      <div style={{ minHeight: height }}>
+        {asTable ? (
+          <ChartTable model={model} height={height} />
+        ) : near ? (
+          <Suspense fallback={<ChartSketch model={model} height={height} />}>
+            <Canvas model={model} height={height} narrow={narrow} onReady={ready} onZoom={zoomed} />
+          </Suspense>
+        ) : (
+          <ChartSketch model={model} height={height} />
+        )}
+      </div>
+      <p role="status" className="sr-only">
+        {said}
+      </p>
+    </figure>
+  );
+}

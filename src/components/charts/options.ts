@@ -1,0 +1,266 @@
+import type { EChartsCoreOption } from 'echarts/core';
+import { quantity } from '../../drawings/numbers';
+import { clock, clockSeconds, shortDate } from '../../drawings/times';
+import type { Colours } from './colours';
+import { fromWall, toWall } from './local-time';
+import { valueAt, type ChartBand, type ChartLine, type ChartModel } from './model';
+
+const escaped = (text: string): string =>
+  text.replace(/[&<>"]/g, (c) => ({ '&': '&amp;', '<': '&lt;', '>': '&gt;', '"': '&quot;' })[c] ?? c);
+
+/** A moment as the readout shows it: the clock within a day, the date beyond. */
+export function momentWords(atS: number, model: Pick<ChartModel, 'from' | 'to' | 'timeZone'>): string {
+  const spanS = model.to - model.from;
+  if (spanS <= 8 * 3600) return clockSeconds(atS * 1000, model.timeZone);
+  if (spanS <= 36 * 3600) return clock(atS * 1000, model.timeZone);
+  if (spanS <= 60 * 86_400)
+    return `${shortDate(atS * 1000, model.timeZone)}, ${clock(atS * 1000, model.timeZone)}`;
+  return shortDate(atS * 1000, model.timeZone);
+}
+
+/** The readout at one instant: name and value of each line, the band, the marks that hold then. */
+export function readout(
+  model: ChartModel,
+  atS: number,
+): { title: string; rows: [string, string][]; marks: string[] } {
+  const near = Math.max(120, (model.to - model.from) / 60);
+  const rows: [string, string][] = model.lines.map((line) => {
+    const value = valueAt(line, atS, near);
+    return [line.name, value === null ? 'nothing reported' : quantity(value, model.unit, model.digits)];
+  });
+  if (model.band) {
+    const low = valueAt({ at: model.band.at, values: model.band.low }, atS, near * 2);
+    const high = valueAt({ at: model.band.at, values: model.band.high }, atS, near * 2);
+    if (low !== null && high !== null)
+      rows.push([
+        model.band.name,
+        `${quantity(low, '', model.digits).trim()} to ${quantity(high, model.unit, model.digits)}`,
+      ]);
+  }
+  return {
+    title: momentWords(atS, model),
+    rows,
+    marks: model.marks
+      .filter((m) => (m.to === null ? Math.abs(m.from - atS) < near / 2 : atS >= m.from && atS <= m.to))
+      .map((m) => m.words),
+  };
+}
+
+function bandSeries(band: ChartBand, model: ChartModel, colour: string, opacity: number, stack: string) {
+  const base = {
+    type: 'line',
+    stack,
+    symbol: 'none',
+    silent: true,
+    lineStyle: { opacity: 0 },
+    connectNulls: false,
+  };
+  const low: [number, number | null][] = [];
+  const width: [number, number | null][] = [];
+  band.at.forEach((at, i) => {
+    const x = toWall(at, model.timeZone);
+    const from = band.low[i] ?? null;
+    const to = band.high[i] ?? null;
+    low.push([x, from]);
+    width.push([x, from === null || to === null ? null : to - from]);
+  });
+  return [
+    { ...base, id: `${stack} low`, data: low, z: 1, stackStrategy: 'all' },
+    {
+      ...base,
+      id: `${stack} high`,
+      data: width,
+      z: 1,
+      stackStrategy: 'all',
+      areaStyle: { color: colour, opacity },
+    },
+  ];
+}
+
+function lineSeries(line: ChartLine, model: ChartModel, c: Colours) {
+  return {
+    type: 'line',
+    id: `line ${line.name}`,
+    name: line.name,
+    data: line.at.map((at, i) => [toWall(at, model.timeZone), line.values[i] ?? null]),
+    showSymbol: false,
+    symbolSize: 5,
+    connectNulls: false,
+    sampling: 'lttb',
+    z: line.quiet ? 3 : 4,
+    itemStyle: { color: c[line.tone] },
+    lineStyle: { color: c[line.tone], width: line.quiet ? 1 : 2, opacity: line.quiet ? 0.45 : 1 },
+    emphasis: { disabled: true },
+  };
+}
+
+/** Marks that have room for their words: the grave ones first, none within a ninth of the span of another. */
+function labelled(model: ChartModel): Set<number> {
+  const order = { crimson: 0, rust: 1, plum: 2, slate: 3, petrol: 4 } as const;
+  const chosen: number[] = [];
+  const by = model.marks.map((m, i) => ({ m, i })).sort((a, b) => order[a.m.tone] - order[b.m.tone]);
+  for (const { m, i } of by) {
+    const room = (model.to - model.from) / 9;
+    if (chosen.length < 6 && chosen.every((k) => Math.abs((model.marks[k]?.from ?? 0) - m.from) > room))
+      chosen.push(i);
+  }
+  return new Set(chosen);
+}
+
+function grounds(model: ChartModel, c: Colours) {
+  const x = (at: number) => toWall(at, model.timeZone);
+  const withWords = labelled(model);
+  const middle = (model.from + model.to) / 2;
+  return {
+    type: 'line',
+    id: 'grounds',
+    data: [],
+    silent: true,
+    symbol: 'none',
+    z: 2,
+    markArea: {
+      silent: true,
+      animation: false,
+      data: [
+        ...model.nights.map(([from, to]) => [
+          { xAxis: x(Math.max(from, model.from)), itemStyle: { color: c['slate-wash'], opacity: 0.55 } },
+          { xAxis: x(Math.min(to, model.to)) },
+        ]),
+        ...model.marks.flatMap((m) =>
+          m.to === null
+            ? []
+            : [
+                [
+                  { xAxis: x(m.from), itemStyle: { color: c['plum-wash'], opacity: 0.9 } },
+                  { xAxis: x(m.to) },
+                ],
+              ],
+        ),
+      ],
+    },
+    markLine: {
+      silent: true,
+      animation: false,
+      symbol: 'none',
+      data: model.marks.map((m, i) => ({
+        xAxis: x(m.from),
+        lineStyle: {
+          color: c[m.tone],
+          type: m.to === null ? [4, 3] : 'solid',
+          width: m.to === null ? 1.3 : 0.8,
+        },
+        label: {
+          show: withWords.has(i),
+          formatter: `${clock(m.from * 1000, model.timeZone)} ${m.words}`,
+          position: 'insideEndTop',
+          rotate: 0,
+          align: m.from > middle ? 'right' : 'left',
+          verticalAlign: 'bottom',
+          distance: m.from > middle ? [6, -16] : [-6, -16],
+          color: m.tone === 'rust' ? c['rust-ink'] : c[m.tone],
+          fontSize: 12,
+          fontWeight: 600,
+          fontFamily: 'inherit',
+        },
+      })),
+    },
+  };
+}
+
+/** Everything that the chart library is told. Pure but for the given colours. */
+export function chartOptions(model: ChartModel, c: Colours, narrow: boolean): EChartsCoreOption {
+  const text = {
+    color: c['ink-2'],
+    fontSize: 12,
+    fontFamily: '"Inter Tight Variable", system-ui, sans-serif',
+  };
+  return {
+    animation: false, // live values change in place; nothing slides
+    useUTC: true,
+    textStyle: text,
+    grid: { left: narrow ? 42 : 54, right: narrow ? 8 : 16, top: 30, bottom: 62 },
+    xAxis: {
+      type: 'time',
+      min: toWall(model.from, model.timeZone),
+      max: toWall(model.to, model.timeZone),
+      splitNumber: narrow ? 4 : 8,
+      axisLine: { lineStyle: { color: c.rule } },
+      axisTick: { show: false },
+      splitLine: { show: false },
+      axisLabel: {
+        ...text,
+        hideOverlap: true,
+        formatter: {
+          year: '{yyyy}',
+          month: '{MMM}',
+          day: '{d} {MMM}',
+          hour: '{HH}:{mm}',
+          minute: '{HH}:{mm}',
+        },
+      },
+      axisPointer: { lineStyle: { color: c['ink-3'], type: 'solid', width: 1 } },
+    },
+    yAxis: {
+      type: 'value',
+      scale: !model.fromZero,
+      name: model.unit,
+      nameGap: 12,
+      nameTextStyle: { ...text, align: 'right', padding: [0, 8, 0, 0] },
+      splitNumber: 4,
+      axisLabel: text,
+      splitLine: { lineStyle: { color: c['rule-faint'] } },
+    },
+    tooltip: {
+      trigger: 'axis',
+      confine: true,
+      transitionDuration: 0,
+      backgroundColor: c.sheet,
+      borderColor: c.ink,
+      borderWidth: 1,
+      padding: [6, 10],
+      textStyle: { ...text, color: c.ink },
+      extraCssText: 'border-radius:2px;box-shadow:none',
+      formatter: (params: unknown) => {
+        const first = Array.isArray(params) ? (params[0] as { axisValue?: unknown } | undefined) : undefined;
+        if (typeof first?.axisValue !== 'number') return '';
+        const r = readout(model, fromWall(first.axisValue, model.timeZone));
+        const rows = r.rows
+          .slice(0, 18)
+          .map(
+            ([name, value]) =>
+              `<tr><td style="padding-right:12px;color:${c['ink-2']}">${escaped(name)}</td><td style="text-align:right;font-weight:600">${escaped(value)}</td></tr>`,
+          );
+        const marks = r.marks.map(
+          (m) => `<div style="max-width:240px;white-space:normal">${escaped(m)}</div>`,
+        );
+        return `<div style="font-variant-numeric:tabular-nums"><b>${escaped(r.title)}</b><table>${rows.join('')}</table>${marks.join('')}</div>`;
+      },
+    },
+    dataZoom: [
+      {
+        type: 'slider',
+        height: 18,
+        bottom: 8,
+        borderColor: c.rule,
+        fillerColor: c['petrol-wash'],
+        backgroundColor: 'transparent',
+        dataBackground: { lineStyle: { opacity: 0 }, areaStyle: { opacity: 0 } },
+        selectedDataBackground: { lineStyle: { opacity: 0 }, areaStyle: { opacity: 0 } },
+        handleStyle: { color: c.sheet, borderColor: c['ink-3'] },
+        moveHandleSize: 0,
+        showDetail: false,
+        brushSelect: false,
+        filterMode: 'none',
+      },
+      ...(narrow
+        ? []
+        : [{ type: 'inside', zoomOnMouseWheel: 'ctrl', moveOnMouseWheel: false, filterMode: 'none' }]),
+    ],
+    series: [
+      grounds(model, c),
+      ...(model.band ? bandSeries(model.band, model, c.petrol, 0.16, 'band') : []),
+      ...(model.spread ? bandSeries(model.spread, model, c['ink-3'], 0.22, 'spread') : []),
+      ...model.lines.map((line) => lineSeries(line, model, c)),
+    ],
+  };
+}

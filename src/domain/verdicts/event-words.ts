@@ -1,0 +1,101 @@
+import { COMMANDS, type EventKind, type InForce } from './codes';
+
+/** What an event says, in one line, for lists, charts and mail. */
+export type EventTone = 'rust' | 'crimson' | 'plum' | 'slate' | 'petrol';
+export interface EventWords {
+  words: string;
+  tone: EventTone;
+}
+type Detail = Readonly<Record<string, unknown>>;
+
+const text = (detail: Detail, key: string): string => (typeof detail[key] === 'string' ? detail[key] : '');
+const positionsOf = (detail: Detail): number[] =>
+  Array.isArray(detail.positions) ? detail.positions.filter((p): p is number => typeof p === 'number') : [];
+
+/** "Position 5", "Positions 5 and 9", "14 units"; without positions "Units". */
+function unitsOf(detail: Detail): { subject: string; many: boolean } {
+  const at = positionsOf(detail);
+  if (at.length === 0) return { subject: 'Units', many: true };
+  if (at.length === 1) return { subject: `Position ${at[0]}`, many: false };
+  if (at.length > 4) return { subject: `${at.length} units`, many: true };
+  return { subject: `Positions ${at.slice(0, -1).join(', ')} and ${at.at(-1)}`, many: true };
+}
+
+const COMMAND_WORDS: Record<InForce, string> = {
+  initiator: 'Shutdown by the initiator',
+  keep_alive_lost: 'Keep-alive lost',
+  power_lost: 'Shutdown: power lost',
+  released: 'Released',
+};
+const INVERTER_WORDS: Record<string, string> = {
+  standby: 'stands by',
+  running: 'runs',
+  derated: 'is derated',
+  curtailed: 'is curtailed',
+  grid_lost: 'has lost the grid',
+  fault: 'reports a fault',
+};
+
+/** What is in force, as it stands at the beginning of a line. */
+export const commandWords = (inForce: InForce): string => COMMAND_WORDS[inForce];
+
+/** One line for one event; what a detail lacks is left out, never guessed. */
+export function eventWords(kind: EventKind, detail: Detail): EventWords {
+  const { subject, many } = unitsOf(detail);
+  const is = many ? 'are' : 'is';
+  const at = (key: string, before = ' '): string =>
+    text(detail, key) ? `${before}${text(detail, key)}` : '';
+  switch (kind) {
+    case 'units_stuck':
+      return { words: `${subject} ${is} stuck in shutdown`, tone: 'rust' };
+    case 'units_not_shutting_down':
+      return { words: `${subject} did not shut down`, tone: 'crimson' };
+    case 'units_unconfirmed':
+      return { words: `Shutdown of ${subject.toLowerCase()} is not confirmed`, tone: 'slate' };
+    case 'units_recovered':
+      return { words: `${subject} ${is} right again`, tone: 'petrol' };
+    case 'units_silent':
+      return { words: `${subject} fell silent`, tone: 'slate' };
+    case 'units_back':
+      return { words: `${subject} ${is} heard again`, tone: 'petrol' };
+    case 'units_heard':
+      return { words: `${subject} answered the roll call`, tone: 'petrol' };
+    case 'string_finding':
+      return text(detail, 'finding') === 'not_shutting_down'
+        ? { words: 'Voltage stands on the string while shutdown is commanded', tone: 'crimson' }
+        : text(detail, 'finding') === 'stuck_positions_unknown'
+          ? { words: 'Some units do not pass, positions unknown', tone: 'rust' }
+          : { words: 'The string’s voltage is not explained by its units', tone: 'rust' };
+    case 'string_finding_ended':
+      return { words: 'The string’s voltage is explained again', tone: 'petrol' };
+    case 'command': {
+      const inForce = COMMANDS.find((c) => c === detail.inForce);
+      const where = text(detail, 'zone') || text(detail, 'transmitter');
+      if (!inForce) return { words: 'A command came in force', tone: 'slate' };
+      return {
+        words: `${commandWords(inForce)}${where ? `, ${where}` : ''}`,
+        tone: inForce === 'released' ? 'petrol' : 'plum',
+      };
+    }
+    case 'inverter_status': {
+      const status = INVERTER_WORDS[text(detail, 'status')] ?? 'changed its state';
+      return { words: `${text(detail, 'inverter') || 'The inverter'} ${status}`, tone: 'slate' };
+    }
+    case 'logger_connected':
+      return { words: `The logger${at('logger')} reports`, tone: 'petrol' };
+    case 'logger_lost':
+      return { words: `The logger${at('logger')} stopped reporting`, tone: 'slate' };
+    case 'gateway_silent':
+      return { words: `${text(detail, 'gateway') || 'A gateway'} fell silent`, tone: 'slate' };
+    case 'gateway_back':
+      return { words: `${text(detail, 'gateway') || 'A gateway'} is heard again`, tone: 'petrol' };
+    case 'roll_call_started':
+      return { words: `Roll call started${at('person', ' by ')}`, tone: 'petrol' };
+    case 'roll_call_stopped':
+      return { words: `Roll call stopped${at('person', ' by ')}`, tone: 'slate' };
+    case 'roster_changed':
+      return { words: 'The as-built was changed', tone: 'slate' };
+    case 'hazard_acknowledged':
+      return { words: `${text(detail, 'person') || 'Somebody'} acknowledged a hazard`, tone: 'slate' };
+  }
+}

@@ -1,0 +1,105 @@
+import type { ChartModel } from '../../components/charts/model';
+import type { StringHistory, StringUnits } from '../../schemas/api/string';
+
+const TITLE = {
+  day: 'String voltage, one day',
+  week: 'String voltage, one week',
+  month: 'String voltage, one month',
+  year: 'String voltage, one year',
+} as const;
+
+/** Puts the finer part into the whole, in place of what the whole says of that time. */
+export function refined(whole: StringHistory, part: StringHistory | null): StringHistory {
+  if (!part || part.resolution === whole.resolution) return whole;
+  const outside = (at: number) => at < part.from || at > part.to;
+  const pick = (values: readonly (number | null)[]) => values.filter((_, i) => outside(whole.at[i] ?? 0));
+  const before = whole.at.filter((at) => at < part.from).length;
+  const insert = <T>(rest: readonly T[], into: readonly T[]) => [
+    ...rest.slice(0, before),
+    ...into,
+    ...rest.slice(before),
+  ];
+  const eBefore = whole.expected.at.filter((at) => at < part.from).length;
+  const eOutside = (values: readonly (number | null)[]) =>
+    values.filter((_, i) => outside(whole.expected.at[i] ?? 0));
+  const eInsert = <T>(rest: readonly T[], into: readonly T[]) => [
+    ...rest.slice(0, eBefore),
+    ...into,
+    ...rest.slice(eBefore),
+  ];
+  return {
+    ...whole,
+    at: insert(whole.at.filter(outside), part.at),
+    voltage: insert(pick(whole.voltage), part.voltage),
+    low: insert(pick(whole.low), part.low),
+    high: insert(pick(whole.high), part.high),
+    energy: insert(pick(whole.energy), part.energy),
+    expected: {
+      ...whole.expected,
+      at: eInsert(whole.expected.at.filter(outside), part.expected.at),
+      low: eInsert(eOutside(whole.expected.low), part.expected.low),
+      high: eInsert(eOutside(whole.expected.high), part.expected.high),
+    },
+    nights: part.nights.length > 0 && whole.nights.length === 0 ? part.nights : whole.nights,
+    marks: part.marks.length > whole.marks.length ? part.marks : whole.marks,
+  };
+}
+
+/** A string's history as a chart. */
+export function historyChart(history: StringHistory): ChartModel {
+  const coarse = history.resolution !== 'minute';
+  return {
+    title: TITLE[history.range],
+    unit: 'V',
+    digits: 0,
+    timeZone: history.timeZone,
+    from: history.from,
+    to: history.to,
+    lines: [
+      { name: coarse ? 'Mean voltage' : 'Voltage', at: history.at, values: history.voltage, tone: 'ink' },
+    ],
+    band: history.expected.at.length
+      ? { name: 'Expected', at: history.expected.at, low: history.expected.low, high: history.expected.high }
+      : undefined,
+    spread: coarse
+      ? { name: 'Lowest to highest', at: history.at, low: history.low, high: history.high }
+      : undefined,
+    nights: history.nights,
+    marks: history.marks,
+    fromZero: true,
+  };
+}
+
+const QUANTITY = {
+  voltage: 'Voltage',
+  current: 'Current',
+  temperature: 'Temperature',
+  power: 'Power',
+} as const;
+const DIGITS = { voltage: 1, current: 2, temperature: 0, power: 0 } as const;
+
+/** Units over a day as a chart: those chosen stand out, in the colour of their trouble if they have one. */
+export function unitsChart(
+  units: StringUnits,
+  chosen: ReadonlySet<number>,
+  tones: ReadonlyMap<number, 'rust' | 'crimson'>,
+): ChartModel {
+  return {
+    title: `${QUANTITY[units.quantity]} of single units${units.quantity === 'voltage' && units.side === 'module' ? ', module side' : ''}`,
+    unit: units.unit,
+    digits: DIGITS[units.quantity],
+    timeZone: units.timeZone,
+    from: units.from,
+    to: units.to,
+    lines: units.lines.map((line) => ({
+      name: `Position ${line.position}`,
+      at: units.at,
+      values: line.values,
+      tone: chosen.has(line.position) ? (tones.get(line.position) ?? 'ink') : 'petrol',
+      quiet: !chosen.has(line.position),
+    })),
+    nights: units.nights,
+    marks: [],
+    fromZero: units.quantity !== 'temperature' && units.quantity !== 'voltage',
+  };
+}

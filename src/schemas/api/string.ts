@@ -1,0 +1,137 @@
+import { z } from 'zod';
+import { eventItem, id, stringNow } from './now';
+
+/** What the page of one string shows and what its endpoints answer. SI units; instants ISO 8601 or epoch seconds. */
+
+const time = z.iso.datetime();
+
+export const stringParams = z.strictObject({ string: id });
+
+/** Why units of the string are said to be what they are, as the judgement recorded it. */
+export const unitEvidence = z.object({
+  position: z.int(),
+  basis: z.enum(['measured', 'claim', 'nothing_heard']),
+  thresholdSource: z.string(),
+  confidence: z.number(), // 0 … 1
+  couldBe: z.array(z.string()),
+});
+export type UnitEvidence = z.infer<typeof unitEvidence>;
+
+export const findingEvidence = z.object({
+  scope: z.enum(['string', 'input']),
+  measuredV: z.number(),
+  expectedV: z.number().nullable(),
+  thresholdV: z.number(),
+  thresholdSource: z.string(),
+  units: z.number().nullable(),
+  unitsRange: z.tuple([z.number(), z.number()]).nullable(),
+  ofN: z.number(),
+  confidence: z.number(),
+  couldBe: z.array(z.string()),
+});
+
+export const stringPage = z.object({
+  at: time, // the server's clock
+  site: z.object({
+    id,
+    name: z.string(),
+    timeZone: z.string(),
+    stage: z.enum(['commissioning', 'operating']),
+  }),
+  string: stringNow,
+  plane: z.object({ name: z.string(), surfaceTilt: z.number(), surfaceAzimuth: z.number() }),
+  unitType: z.object({
+    name: z.string(),
+    measures: z.enum(['none', 'input', 'output', 'both']),
+    insulationTestMax: z.number().nullable(),
+  }),
+  moduleType: z.string(),
+  /** W/m² and °C in this plane, where a sensor says. */
+  light: z.object({ poaGlobal: z.number().nullable(), temperatureModule: z.number().nullable() }),
+  evidence: z.object({ units: z.array(unitEvidence), finding: findingEvidence.nullable() }),
+  lostToday: z.object({ wh: z.number(), since: time, against: z.string() }).nullable(),
+  neighbours: z.object({
+    previous: z.object({ id, name: z.string() }).nullable(),
+    next: z.object({ id, name: z.string() }).nullable(),
+  }),
+  events: z.array(eventItem), // newest first
+});
+export type StringPage = z.infer<typeof stringPage>;
+
+export const HISTORY_RANGES = ['day', 'week', 'month', 'year'] as const;
+export type HistoryRange = (typeof HISTORY_RANGES)[number];
+
+const day = z.iso.date('Give a day as 2026-11-03');
+export const historyQuery = z.strictObject({
+  range: z.enum(HISTORY_RANGES).default('day'),
+  /** The last day of the range, at the site; absent: today. */
+  on: day.optional(),
+  /** A part of the range, which may come finer; both or neither. Epoch seconds. */
+  from: z.coerce.number().int().min(1_500_000_000).max(4_102_444_800).optional(),
+  to: z.coerce.number().int().min(1_500_000_000).max(4_102_444_800).optional(),
+});
+export type HistoryQuery = z.infer<typeof historyQuery>;
+
+export const RESOLUTIONS = ['minute', 'quarter', 'day'] as const;
+
+/** A mark on a chart: an instant, or a stretch of time. */
+export const chartMark = z.object({
+  from: z.number(), // epoch s
+  to: z.number().nullable(), // null: an instant
+  words: z.string(),
+  tone: z.enum(['rust', 'crimson', 'plum', 'slate', 'petrol']),
+});
+export type ChartMark = z.infer<typeof chartMark>;
+
+const series = z.array(z.number().nullable());
+export const stringHistory = z.object({
+  range: z.enum(HISTORY_RANGES),
+  resolution: z.enum(RESOLUTIONS),
+  from: z.number(), // epoch s
+  to: z.number(),
+  timeZone: z.string(),
+  /** Epoch s, rising; a null voltage is a gap. */
+  at: z.array(z.number()),
+  voltage: series, // V, mean
+  low: series, // V, lowest within the step; as voltage where the step is a report
+  high: series,
+  energy: series, // Wh in the step; empty where the string's units tell nothing
+  expected: z.object({
+    at: z.array(z.number()),
+    low: series,
+    high: series,
+    from: z.string(), // in words
+  }),
+  nights: z.array(z.tuple([z.number(), z.number()])),
+  marks: z.array(chartMark),
+  /** What the reader must know: "no minutes are kept so far back", "shared by two strings". */
+  notes: z.array(z.string()),
+});
+export type StringHistory = z.infer<typeof stringHistory>;
+
+export const UNIT_QUANTITIES = ['voltage', 'current', 'temperature', 'power'] as const;
+export type UnitQuantity = (typeof UNIT_QUANTITIES)[number];
+
+export const unitsQuery = z.strictObject({
+  quantity: z.enum(UNIT_QUANTITIES).default('voltage'),
+  on: day.optional(),
+  /** Positions with commas; absent: all. */
+  positions: z
+    .string()
+    .regex(/^\d{1,2}(,\d{1,2}){0,62}$/, 'Give positions with commas, as 5,9')
+    .optional(),
+});
+export type UnitsQuery = z.infer<typeof unitsQuery>;
+
+export const stringUnits = z.object({
+  quantity: z.enum(UNIT_QUANTITIES),
+  unit: z.string(), // V, A, °C, W
+  side: z.enum(['output', 'module']), // where a voltage is measured
+  from: z.number(),
+  to: z.number(),
+  timeZone: z.string(),
+  at: z.array(z.number()),
+  lines: z.array(z.object({ position: z.int(), values: series })),
+  nights: z.array(z.tuple([z.number(), z.number()])),
+});
+export type StringUnits = z.infer<typeof stringUnits>;
