@@ -1,23 +1,19 @@
-import { FRAME_RANGES, type Frame, type FrameField, type LoggerMessage } from '../../src/schemas/ingest';
+import type { UnitType } from '../../src/domain/equipment/unit-type';
+import type { Frame, LoggerMessage } from '../../src/schemas/ingest';
 import { mix, smoothNoise, uniform } from '../chance';
 import { ofKind } from '../faults/book';
 import type { Fault } from '../faults/kinds';
 import type { SitePlant, Seat } from '../plant/site-plant';
-import { PASSING, SHUTDOWN, STARTING, UNPOWERED } from '../plant/string-plant';
+import { PASSING, SHUTDOWN, STARTING, UNPOWERED, type StringPlant } from '../plant/string-plant';
 
 /** What a logger can know of the plant: true values with meter errors, and nothing of units that it can't hear. */
 
 type RowsOf<T extends LoggerMessage['type']> = Extract<LoggerMessage, { type: T; rows: unknown }>['rows'];
-type Column = (number | null)[];
 
 /** Below this many volts an inverter's own measurement reads nothing. */
 const INPUT_FLOOR = 12;
-const LOST_REPORTS = 0.004;
-
-const whole = (field: FrameField, value: number): number => {
-  const [low, high] = FRAME_RANGES[field];
-  return Math.max(low, Math.min(high, Math.round(value)));
-};
+/** Of 256 reports. */
+const LOST_REPORTS = 1;
 
 /** How the radio of one site stands, made once for a step. */
 export interface Radio {
@@ -44,28 +40,28 @@ export function radioOf(site: SitePlant, logger: string): Radio {
 /** The gateway that hears a unit now: its own, or a neighbour's for the few that sit between two. */
 export function gatewayOf(site: SitePlant, { string, index }: Seat): number {
   const own = string.plan.slots[index]?.gateway ?? 0;
-  const gateways = site.plan.loggers.find((l) => l.serial === string.plan.logger)?.gateways.length ?? 1;
-  // The last gateway of a site with several stands by itself.
-  if (gateways < 3 || own === gateways || uniform(mix(string.key, 31), index) > 0.05) return own;
-  const other = own === 1 ? 2 : own - 1;
-  return uniform(mix(string.key, Math.floor(site.atS / 1800)), index) < 0.3 ? other : own;
+  // The last gateway of a site stands by itself.
+  if (own >= site.gateways - 1 || uniform(string.key + 31, index) > 0.05) return own;
+  return uniform(mix(string.key, Math.floor(site.atS / 1800)), index) < 0.3 ? own + 1 : own;
 }
 
-export const signalOf = ({ string, index }: Seat, atS: number): number =>
-  whole('signal', (string.signal[index] ?? -70) + 2.5 * smoothNoise(mix(string.key, index), atS / 900));
+/** dBm as a gateway measures it; `noise` is a whole number, of which a few bits serve. */
+export const signalOf = ({ string, index }: Seat, fade: number, noise: number): number =>
+  Math.round(string.signal[index]! + fade + ((noise >>> 28) & 3) - 1.5);
+
+/** Slow rise and fall of a string's signals, dB. */
+export const fadeOf = (s: StringPlant, atS: number): number => 2.5 * smoothNoise(s.key, atS / 900);
 
 const CLAIM = { [PASSING]: 1, [SHUTDOWN]: 2, [STARTING]: 3 } as Record<number, number>;
 
-/** The errors that one report of one unit carries, −0.5 … 0.5 each. */
-const jitter = (key: number, atS: number, index: number) => uniform(mix(key, atS), index) - 0.5;
-
-/** A unit as its report gives it; null when nothing was heard. */
-export function hears(site: SitePlant, radio: Radio, seat: Seat, serial: string, kept = false): boolean {
-  const { string, index } = seat;
-  if (string.mode[index] === UNPOWERED || !site.heard.has(serial) || radio.mute.has(serial)) return false;
+/** Whether a unit's report reaches the logger, or (`kept`) a gateway that will hand it over later. */
+export function hears(site: SitePlant, radio: Radio, seat: Seat, kept = false): boolean {
+  const { string: s, index } = seat;
+  if (s.mode[index] === UNPOWERED || s.heard[index] !== 1) return false;
+  if (radio.mute.size > 0 && radio.mute.has(s.serials[index] ?? '')) return false;
+  if (radio.deadGateways.size === 0) return !kept;
   const gateway = gatewayOf(site, seat);
-  if (kept ? !radio.keepingGateways.has(gateway) : radio.deadGateways.has(gateway)) return false;
-  return uniform(mix(string.key, site.atS), 500 + index) > LOST_REPORTS;
+  return kept ? radio.keepingGateways.has(gateway) : !radio.deadGateways.has(gateway);
 }
 
 /**
@@ -81,59 +77,60 @@ export function frameOf(
   kept = false,
 ): Frame | null {
   const n = serials.length;
-  const column = (): Column => new Array<number | null>(n).fill(null);
-  const frame: Required<Frame> = {
-    voltageOut: column(),
-    voltageIn: column(),
-    current: column(),
-    powerOut: column(),
-    temperature: column(),
-    signal: column(),
-    via: column(),
-    state: column(),
-  };
-  let measures: 'none' | 'input' | 'output' | 'both' = 'none';
-  let power = false;
-  let any = false;
+  let frame: Required<Frame> | null = null;
+  let type: UnitType | null = null;
+  let fading: StringPlant | null = null;
+  let fade = 0;
+  const seats = site.seatsOf(serials);
   for (let k = 0; k < n; k++) {
-    const serial = serials[k];
-    const seat = serial ? site.seatOf(serial) : undefined;
-    if (!serial || !seat || !hears(site, radio, seat, serial, kept)) continue;
+    const seat = seats[k];
+    if (!seat || !hears(site, radio, seat, kept)) continue;
     const { string: s, index: i } = seat;
-    const type = s.unitType;
-    if (type.kind === 'shutdown_only') continue;
-    any = true;
-    measures = type.measures;
-    power ||= type.kind === 'optimizing';
-    const key = mix(s.key, 2000 + i);
-    const gain = s.voltageGain[i] ?? 1;
-    const out = s.voltageOut[i] ?? 0;
-    const amps = s.current;
-    const lying = site.claimOf(s, i);
-    frame.voltageOut[k] = whole('voltageOut', out * gain * 100 + 4 * jitter(key, site.atS, 0));
-    frame.voltageIn[k] = whole(
-      'voltageIn',
-      (s.voltageIn[i] ?? 0) * gain * 100 + 4 * jitter(key, site.atS, 1),
-    );
-    frame.current[k] = whole('current', amps * 1000 * (s.currentGain[i] ?? 1) + 8 * jitter(key, site.atS, 2));
-    frame.powerOut[k] = whole('powerOut', out * amps * gain * 10);
-    frame.temperature[k] = whole(
-      'temperature',
-      ((s.temperature[i] ?? 20) - 2) * 10 + 4 * jitter(key, site.atS, 3),
-    );
-    frame.signal[k] = signalOf(seat, site.atS);
+    if (s.unitType.kind === 'shutdown_only') continue;
+    // One draw a report: its bits are the errors of the single readings.
+    const noise = mix(s.key + i, site.atS);
+    if ((noise & 0xff) < LOST_REPORTS) continue;
+    frame ??= emptyFrame(n);
+    type ??= s.unitType;
+    if (fading !== s) [fading, fade] = [s, fadeOf(s, site.atS)];
+    const gain = s.voltageGain[i]!;
+    const out = s.voltageOut[i]!;
+    frame.voltageOut[k] = Math.round(out * gain * 100 + ((noise >>> 8) & 3) - 1.5);
+    frame.voltageIn[k] = Math.round(s.voltageIn[i]! * gain * 100 + ((noise >>> 10) & 3) - 1.5);
+    frame.current[k] = Math.round(s.current * 1000 * s.currentGain[i]! + ((noise >>> 12) & 7) - 3.5);
+    frame.powerOut[k] = Math.max(0, Math.round(out * s.current * gain * 10));
+    frame.temperature[k] = Math.round((s.temperature[i]! - 2) * 10 + ((noise >>> 16) & 3) - 1.5);
+    frame.signal[k] = signalOf(seat, fade, noise);
     frame.via[k] = gatewayOf(site, seat);
-    frame.state[k] = lying ?? CLAIM[s.mode[i] ?? 0] ?? 0;
+    frame.state[k] = site.claimOf(s, i) ?? CLAIM[s.mode[i]!] ?? 0;
   }
-  if (!any) return null;
+  if (!frame || !type) return null;
   const { voltageOut, voltageIn, powerOut, ...always } = frame;
   return {
-    ...(measures === 'output' || measures === 'both' ? { voltageOut } : {}),
-    ...(measures === 'input' || measures === 'both' ? { voltageIn } : {}),
-    ...(power ? { powerOut } : {}),
+    ...(type.measures !== 'input' ? { voltageOut } : {}),
+    ...(type.measures !== 'output' ? { voltageIn } : {}),
+    ...(type.kind === 'optimizing' ? { powerOut } : {}),
     ...always,
   };
 }
+
+const column = (n: number): (number | null)[] => new Array<number | null>(n).fill(null);
+
+function emptyFrame(n: number): Required<Frame> {
+  return {
+    voltageOut: column(n),
+    voltageIn: column(n),
+    current: column(n),
+    powerOut: column(n),
+    temperature: column(n),
+    signal: column(n),
+    via: column(n),
+    state: column(n),
+  };
+}
+
+/** The error that one reading of an input carries, −0.5 … 0.5. */
+const jitter = (key: number, atS: number, index: number) => uniform(mix(key, atS), index) - 0.5;
 
 export function inputRows(site: SitePlant, logger: string): RowsOf<'inputs'> {
   const rows: RowsOf<'inputs'> = [];

@@ -90,6 +90,17 @@ export function largestPhotocurrent(s: StringPlant): number {
   return most;
 }
 
+/** V over the string with no current, shadows left out: enough to see whether an input is alive. */
+export function openVoltage(s: StringPlant): number {
+  let v = 0;
+  for (let i = 0; i < s.size; i++) {
+    const mode = s.mode[i];
+    if (mode === PASSING || mode === NO_UNIT) v += s.voc[i]!;
+    else if (mode !== UNPOWERED) v += s.shutdownVoltage[i]!;
+  }
+  return v;
+}
+
 /** Writes the units' voltages for the current that was found. */
 export function settle(s: StringPlant, current: number): void {
   s.current = current;

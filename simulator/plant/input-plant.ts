@@ -2,7 +2,8 @@ import { largestPhotocurrent, moduleVoltage, settle, stringVoltage } from './cur
 import { PASSING, type StringPlant } from './string-plant';
 
 /** Shares of the largest photocurrent at which curves are sampled: close together about the knee. */
-const SAMPLES = [0, 0.2, 0.4, 0.6, 0.75, 0.84, 0.88, 0.905, 0.925, 0.94, 0.955, 0.97, 0.985, 0.995];
+const IN_FULL_LIGHT = [0, 0.86, 0.89, 0.91, 0.925, 0.94, 0.955, 0.97, 0.99];
+const IN_SHADE = [0, 0.2, 0.4, 0.6, 0.75, 0.84, 0.88, 0.905, 0.925, 0.94, 0.955, 0.97, 0.985, 0.995];
 /** What an optimizing unit keeps of its module's power. */
 const OPTIMIZING_EFFICIENCY = 0.988;
 
@@ -14,14 +15,16 @@ export class InputPlant {
 
   private readonly curves: Float64Array[];
   private readonly shares: Float64Array[];
+  /** How many of the samples hold for this moment. */
+  private samples = 0;
 
   constructor(
     readonly inverter: string,
     readonly number: number,
     readonly strings: StringPlant[],
   ) {
-    this.curves = strings.map(() => new Float64Array(SAMPLES.length));
-    this.shares = strings.map(() => new Float64Array(SAMPLES.length));
+    this.curves = strings.map(() => new Float64Array(IN_SHADE.length));
+    this.shares = strings.map(() => new Float64Array(IN_SHADE.length));
   }
 
   get optimizing(): boolean {
@@ -69,14 +72,19 @@ export class InputPlant {
   }
 
   private sample(): void {
-    this.strings.forEach((s, k) => {
+    const uneven = this.strings.length > 1 || this.strings.some((s) => s.shadedGroups.some((g) => g > 0));
+    const samples = uneven ? IN_SHADE : IN_FULL_LIGHT;
+    this.samples = samples.length;
+    for (let k = 0; k < this.strings.length; k++) {
+      const s = this.strings[k]!;
+      const amps = this.shares[k]!;
+      const volts = this.curves[k]!;
       const most = largestPhotocurrent(s);
-      SAMPLES.forEach((share, j) => {
-        const amps = share * most;
-        this.shares[k]![j] = amps;
-        this.curves[k]![j] = stringVoltage(s, amps);
-      });
-    });
+      for (let j = 0; j < samples.length; j++) {
+        amps[j] = samples[j]! * most;
+        volts[j] = stringVoltage(s, amps[j]!);
+      }
+    }
   }
 
   private trackAlone(limit: number, wobble: number): void {
@@ -84,9 +92,9 @@ export class InputPlant {
     const amps = this.shares[0]!;
     const volts = this.curves[0]!;
     let best = 0;
-    for (let j = 1; j < SAMPLES.length; j++) if (amps[j]! * volts[j]! > amps[best]! * volts[best]!) best = j;
+    for (let j = 1; j < this.samples; j++) if (amps[j]! * volts[j]! > amps[best]! * volts[best]!) best = j;
     if (best === 0) return this.openCircuit();
-    let current = peak(amps, volts, best) * (1 + wobble);
+    let current = peak(amps, volts, best, this.samples) * (1 + wobble);
     if (current * stringVoltage(s, current) > limit) {
       let low = 0;
       let high = current;
@@ -105,12 +113,12 @@ export class InputPlant {
     const curve = this.curves[k]!;
     const amps = this.shares[k]!;
     if (volts >= curve[0]!) return 0;
-    for (let j = 1; j < SAMPLES.length; j++)
+    for (let j = 1; j < this.samples; j++)
       if (curve[j]! <= volts) {
         const span = curve[j - 1]! - curve[j]!;
         return amps[j - 1]! + ((amps[j]! - amps[j - 1]!) * (curve[j - 1]! - volts)) / span;
       }
-    return amps[SAMPLES.length - 1]!;
+    return amps[this.samples - 1]!;
   }
 
   private totalAt(volts: number): number {
@@ -125,7 +133,7 @@ export class InputPlant {
     let highest = 0;
     for (const curve of this.curves) {
       highest = Math.max(highest, curve[0]!);
-      for (const volts of curve) {
+      for (const volts of curve.subarray(0, this.samples)) {
         const power = volts * this.totalAt(volts);
         if (power > bestPower) [best, bestPower] = [volts, power];
       }
@@ -196,9 +204,9 @@ export class InputPlant {
 }
 
 /** The current of most power by a parabola through the best sample and its neighbours. */
-function peak(amps: Float64Array, volts: Float64Array, best: number): number {
+function peak(amps: Float64Array, volts: Float64Array, best: number, samples: number): number {
   const at = amps[best]!;
-  if (best === 0 || best === amps.length - 1) return at;
+  if (best === 0 || best === samples - 1) return at;
   const left = at - amps[best - 1]!;
   const right = amps[best + 1]! - at;
   const power = at * volts[best]!;

@@ -2,6 +2,7 @@ import type { InverterStatus } from '../../src/domain/verdicts/codes';
 import { uniform } from '../chance';
 import { ofKind } from '../faults/book';
 import type { Fault } from '../faults/kinds';
+import { openVoltage } from './curve';
 import type { InputPlant } from './input-plant';
 import type { InverterPlan } from './plan';
 
@@ -10,6 +11,8 @@ const START_VOLTAGE = 150;
 const STOP_VOLTAGE = 100;
 /** Seconds of watching the grid before an inverter feeds in. */
 const GRID_WATCH_S = 60;
+/** After a longer step the watching is over. */
+const LONG_STEP_S = 600;
 /** Seconds in which the input's capacitors lose two thirds of their voltage. */
 const DISCHARGE_S = 7;
 /** Share of the rating below which it does not pay to run. */
@@ -69,7 +72,7 @@ export class InverterPlant {
       for (const input of this.inputs) input.openCircuit();
       this.acPower = 0;
       this.status = gridLost ? 'grid_lost' : this.earthFault ? 'fault' : 'standby';
-    } else if (!wasRunning && elapsed > 0 && !(atS >= this.readyAtS)) {
+    } else if (!wasRunning && elapsed > 0 && elapsed < LONG_STEP_S && !(atS >= this.readyAtS)) {
       if (Number.isNaN(this.readyAtS)) this.readyAtS = atS + GRID_WATCH_S;
       for (const input of this.inputs) input.openCircuit();
       this.acPower = 0;
@@ -85,9 +88,15 @@ export class InverterPlant {
   private mayRun(wasRunning: boolean): boolean {
     let available = 0;
     for (const input of this.inputs) {
-      input.openCircuit();
-      if (input.voltage < (wasRunning ? STOP_VOLTAGE : START_VOLTAGE)) continue;
-      for (const s of input.strings) available += 0.75 * s.voltage * (s.photocurrent[0] ?? 0);
+      let highest = 0;
+      let watts = 0;
+      for (const s of input.strings) {
+        const volts = openVoltage(s);
+        highest = Math.max(highest, volts);
+        watts += 0.75 * volts * (s.photocurrent[0] ?? 0);
+      }
+      input.voltage = highest;
+      if (highest >= (wasRunning ? STOP_VOLTAGE : START_VOLTAGE)) available += watts;
     }
     return available > this.plan.acPowerMax * LEAST_SHARE * (wasRunning ? 0.7 : 1.3);
   }

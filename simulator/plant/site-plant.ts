@@ -11,7 +11,7 @@ import { InputPlant } from './input-plant';
 import { InverterPlant } from './inverter-plant';
 import type { SitePlan } from './plan';
 import { setShade } from './shade';
-import { PASSING, StringPlant } from './string-plant';
+import { NO_UNIT, PASSING, StringPlant, UNPOWERED } from './string-plant';
 import { moveUnits, moving, unitFaultsOf, type UnitFaults } from './units';
 
 /** Where a serial really sits. */
@@ -23,6 +23,10 @@ export interface Seat {
 /** Seconds in which a roof's modules take two thirds of a step in temperature. */
 const WARM_UP_S = 420;
 const DAY_S = 86_400;
+/** After a longer step units and inverters have got where they were going. */
+const LONG_STEP_S = 600;
+/** Degrees of the sun's elevation below which no light of it reaches a module. */
+const DEEP_NIGHT = -2.5;
 
 /** A site as it really is. `step` moves it on; everything else reads it. */
 export class SitePlant {
@@ -32,7 +36,7 @@ export class SitePlant {
   readonly inputs: InputPlant[];
   readonly commands: Commands;
   readonly faults = new FaultBook();
-  readonly heard = new Set<string>();
+  private readonly heardSerials = new Set<string>();
   readonly sky: Sky;
   now: SkyNow;
   /** W/m² in each plane at the middle of the site, as a sensor there sees it. */
@@ -40,18 +44,23 @@ export class SitePlant {
   /** °C of the cells of each string. */
   readonly cells = new Map<StringPlant, number>();
   atS: number;
+  /** Gateways of the whole site. */
+  readonly gateways: number;
 
   private seats = new Map<string, Seat>();
+  private rosterSeats = new WeakMap<readonly (string | null)[], (Seat | undefined)[]>();
   private known: { faults: Fault[]; byString: Map<StringPlant, UnitFaults> } | null = null;
   private readonly resistances: number[];
   private readonly dirt: number[];
   private fresh = true;
+  /** Nothing stirs until the sun is near. */
+  private asleep = false;
 
   constructor(
     readonly plan: SitePlan,
     types: { modules: readonly ModuleType[]; units: readonly UnitType[] },
     readonly seed: number,
-    since: number,
+    private readonly since: number,
     /** Epoch seconds from which the site is looked at. */
     fromS: number,
   ) {
@@ -80,6 +89,7 @@ export class SitePlant {
     this.sky = new Sky(plan, seed, since);
     this.commands = new Commands(plan, fromS);
     this.atS = fromS;
+    this.gateways = plan.loggers.reduce((n, l) => n + l.gateways.length, 0);
     this.now = this.sky.at(fromS);
     plan.faults.forEach((f, i) => {
       const until = f.untilS === undefined ? null : since - f.untilS;
@@ -87,7 +97,28 @@ export class SitePlant {
     });
     if (plan.stage === 'operating')
       for (const s of plan.strings)
-        for (const slot of s.slots) if (slot.serial !== null) this.heard.add(slot.serial);
+        for (const slot of s.slots) if (slot.serial !== null) this.heardSerials.add(slot.serial);
+  }
+
+  /** Serials that have answered a roll call at some time. */
+  get heard(): ReadonlySet<string> {
+    return this.heardSerials;
+  }
+
+  /** Seats of a roster's serials, in its order; kept until somebody moves. */
+  seatsOf(serials: readonly (string | null)[]): (Seat | undefined)[] {
+    const found = this.rosterSeats.get(serials);
+    if (found) return found;
+    const seats = serials.map((serial) => (serial === null ? undefined : this.seats.get(serial)));
+    this.rosterSeats.set(serials, seats);
+    return seats;
+  }
+
+  /** The logger has heard this unit: from now on it follows the command in force. */
+  hear(serial: string): void {
+    this.heardSerials.add(serial);
+    const seat = this.seats.get(serial);
+    if (seat) seat.string.heard[seat.index] = 1;
   }
 
   seatOf(serial: string): Seat | undefined {
@@ -108,32 +139,43 @@ export class SitePlant {
 
   /** Moves the site on to `atS` (not before the last step). Returns whether any unit changed its mode. */
   step(atS: number): boolean {
+    for (const o of this.plan.openInitiators) {
+      const openedS = this.since - o.sinceS;
+      if (openedS <= atS && (this.fresh || openedS > this.atS))
+        this.commands.setInitiator(o.initiator, true, openedS, o.by);
+    }
     const faults = this.faults.at(atS);
     if (this.known?.faults !== faults) this.learn(faults);
     this.commands.refresh(faults, atS);
     this.now = this.sky.at(atS);
+    if (this.asleep && this.now.elevation < DEEP_NIGHT) {
+      this.atS = atS;
+      return false;
+    }
     const elapsed = this.fresh ? Infinity : atS - this.atS;
     this.atS = atS;
     this.shine(faults, elapsed);
     let changed = false;
-    const heard = (serial: string) => this.heard.has(serial);
     for (const s of this.strings) {
       const mine = this.known?.byString.get(s);
-      if (mine && moveUnits(s, atS, this.commands, mine, heard)) changed = true;
+      if (mine && moveUnits(s, atS, this.commands, mine)) changed = true;
     }
-    if (this.fresh) this.settleUnits(atS, heard);
+    if (this.fresh || elapsed > LONG_STEP_S) this.settleUnits(atS);
     this.fresh = false;
     for (const inverter of this.inverters) inverter.step(atS, faults, this.now.temperatureAir);
+    this.asleep =
+      this.now.elevation < DEEP_NIGHT &&
+      this.strings.every((s) => s.mode.every((m) => m === UNPOWERED || m === NO_UNIT));
     return changed;
   }
 
   /** At the first look everything has long been where it is going. */
-  private settleUnits(atS: number, heard: (serial: string) => boolean): void {
+  private settleUnits(atS: number): void {
     for (const s of this.strings) {
       const mine = this.known?.byString.get(s);
       if (!mine) continue;
-      moveUnits(s, atS, this.commands, mine, heard);
-      moveUnits(s, atS + 3600, this.commands, mine, heard);
+      moveUnits(s, atS, this.commands, mine);
+      moveUnits(s, atS + 3600, this.commands, mine);
       s.pendingAtS.fill(NaN);
     }
   }
@@ -190,11 +232,16 @@ export class SitePlant {
       }
     });
     this.seats = new Map();
+    this.rosterSeats = new WeakMap();
     for (const s of this.strings)
       s.plan.slots.forEach((slot, index) => {
         if (slot.serial !== null) this.seats.set(slot.serial, { string: s, index });
       });
     for (const f of ofKind(faults, 'wrong_string')) this.swap(f);
+    for (const [serial, { string, index }] of this.seats) {
+      string.serials[index] = serial;
+      string.heard[index] = this.heardSerials.has(serial) ? 1 : 0;
+    }
   }
 
   private swap(f: Extract<Fault, { kind: 'wrong_string' }>): void {

@@ -34,6 +34,9 @@ export class StringPlant {
   readonly currentGain: Float64Array;
   readonly wake: Float64Array;
   readonly signal: Float64Array;
+  /** Serials of the units that really sit here, and whether the logger has heard each of them (1) yet. */
+  readonly serials: (string | null)[];
+  readonly heard: Uint8Array;
   readonly mode: Uint8Array;
   /** What the unit will turn to, and when (epoch seconds); NaN: nothing is pending. */
   readonly pendingMode: Uint8Array;
@@ -97,6 +100,8 @@ export class StringPlant {
     this.voltageIn = floats();
     this.shadeLoss = floats();
     this.pendingAtS = floats().fill(NaN);
+    this.serials = plan.slots.map((slot) => slot.serial);
+    this.heard = new Uint8Array(n);
     this.mode = new Uint8Array(n);
     this.pendingMode = new Uint8Array(n);
     this.shadedGroups = new Uint8Array(n);

@@ -81,13 +81,7 @@ function delay(s: StringPlant, i: number, to: number, atS: number, cutOff: boole
  * Moves the string's units on to `atS`: power by light, then what they hear, each with its own delay.
  * Returns whether any of them changed its mode.
  */
-export function moveUnits(
-  s: StringPlant,
-  atS: number,
-  commands: Commands,
-  faults: UnitFaults,
-  heard: (serial: string) => boolean,
-): boolean {
+export function moveUnits(s: StringPlant, atS: number, commands: Commands, faults: UnitFaults): boolean {
   let changed = false;
   for (let i = 0; i < s.size; i++) {
     const before = s.mode[i];
@@ -100,7 +94,7 @@ export function moveUnits(
       changed ||= before !== UNPOWERED;
       continue;
     }
-    const isHeard = heard(s.plan.slots[i]?.serial ?? '');
+    const isHeard = s.heard[i] === 1;
     let target = wanted(s, i, commands, faults, isHeard);
     if (before === UNPOWERED) {
       // Power comes back: a unit that follows commands starts shut and waits to hear; another simply passes.

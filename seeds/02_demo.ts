@@ -1,0 +1,30 @@
+import type { Knex } from 'knex';
+import { DEMO_SEED, demoFleet } from '../simulator/scenarios/demo';
+import { seedHistory } from './history/fleet-history';
+import { clearFleet } from './plant/clear';
+import { seedPlant } from './plant/seed-plant';
+
+export const DEMO_PASSWORD = 'roof-ladder-meter';
+
+/**
+ * The demo fleet with its past. Does nothing in a database that already has an organisation, unless
+ * WAKELINE_SEED_FRESH=1 asks to empty it first. WAKELINE_DEMO_SECRET must be the simulator's too.
+ */
+export async function seed(knex: Knex): Promise<void> {
+  const secret = process.env.WAKELINE_DEMO_SECRET;
+  const fresh = process.env.WAKELINE_SEED_FRESH === '1';
+  const there = await knex('organisation').first<{ id: number } | undefined>('id');
+  if (there && !fresh) return;
+  if (!secret)
+    throw new Error(
+      'WAKELINE_DEMO_SECRET is not set: give the seed and the simulator the same secret text, so that the demo’s loggers may report.',
+    );
+  await knex.transaction(async (tx) => {
+    if (there) await clearFleet(tx);
+    const fleet = demoFleet(DEMO_SEED, Math.floor(Date.now() / 60_000) * 60);
+    const plant = await seedPlant(tx, fleet, { secret, password: DEMO_PASSWORD });
+    await seedHistory(tx, fleet, plant);
+  });
+  for (const table of ['string_frame', 'string_quarter', 'string_day', 'site_day', 'placement', 'heard'])
+    await knex.raw(`analyze ${table}`);
+}

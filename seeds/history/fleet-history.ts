@@ -1,0 +1,120 @@
+import type { Knex } from 'knex';
+import type { FleetPlan } from '../../simulator/plant/plan';
+import { known } from '../plant/rows';
+import type { SeededPlant } from '../plant/seeded';
+import { CopyInto, copyRows } from './copy';
+import { writeDays } from './days';
+import { QUARTER_COLUMNS, QUARTER_S } from './quarters';
+import {
+  writeCommands,
+  writeLastHeard,
+  writeNewestRows,
+  writeRollCall,
+  writeShutdownTests,
+  writeStates,
+} from './records';
+import { FRAME_COLUMNS, MINUTES_S, QUARTERS_S, SiteHistory, type Lines } from './site-history';
+
+const DAY_S = 86_400;
+const day = (epochS: number) => new Date(epochS * 1000).toISOString().slice(0, 10);
+
+/** Writes the past of every site: months of days, a month of quarters, two days of minutes, and what people did. */
+export async function seedHistory(tx: Knex.Transaction, fleet: FleetPlan, plant: SeededPlant): Promise<void> {
+  await tx.raw('select ensure_days(?::date, ?::date)', [
+    day(fleet.since - QUARTERS_S - DAY_S),
+    day(fleet.since + 3 * DAY_S),
+  ]);
+  const lines: Lines = { quarters: [], inputs: [], inverters: [], weather: [] };
+  const stringDays: string[] = [];
+  const siteDays: string[] = [];
+  const histories: SiteHistory[] = [];
+  const minutesFromS = Math.floor((fleet.since - MINUTES_S) / QUARTER_S) * QUARTER_S;
+  const untilS = Math.floor(fleet.since / 60) * 60;
+
+  const frames = await CopyInto.open(tx, 'string_frame', FRAME_COLUMNS);
+  for (const organisation of fleet.organisations)
+    for (const plan of organisation.sites) {
+      const history = new SiteHistory(fleet, organisation, known(plant.sites, plan.name, 'the site'), lines);
+      history.runMonth(minutesFromS);
+      await history.runMinutes(minutesFromS, untilS, frames);
+      history.siteRollUp.close();
+      const days = writeDays(fleet, organisation, history);
+      stringDays.push(...days.stringDays);
+      siteDays.push(...days.siteDays);
+      histories.push(history);
+    }
+  await frames.close();
+
+  await copyRows(tx, 'string_quarter', QUARTER_COLUMNS, lines.quarters);
+  await copyRows(tx, 'input_frame', ['at', 'input_id', 'voltage', 'current'], lines.inputs);
+  await copyRows(
+    tx,
+    'inverter_frame',
+    [
+      'at',
+      'inverter_id',
+      'ac_power',
+      'energy',
+      'status',
+      'power_limit',
+      'insulation',
+      'arc_flag',
+      'earth_fault_flag',
+    ],
+    lines.inverters,
+  );
+  await copyRows(
+    tx,
+    'weather_frame',
+    ['at', 'sensor_id', 'irradiance', 'temperature_air', 'temperature_module', 'wind_speed'],
+    lines.weather,
+  );
+  await copyRows(
+    tx,
+    'string_day',
+    ['day', 'string_id', 'site_id', 'frames', 'voltage_avg', 'voltage_max', 'energy', 'unit_energy'],
+    stringDays,
+  );
+  await copyRows(
+    tx,
+    'site_day',
+    [
+      'day',
+      'site_id',
+      'energy_ac',
+      'energy_dc',
+      'energy_expected',
+      'lost_minutes',
+      'lost_minutes_grid',
+      'complete',
+    ],
+    siteDays,
+  );
+  await copyRows(
+    tx,
+    'site_quarter',
+    ['at', 'site_id', 'ac_power', 'poa_insolation'],
+    histories.flatMap((h) => h.siteRollUp.quarters),
+  );
+
+  for (const organisation of fleet.organisations) {
+    const worker = organisation.people.find((p) => p.role === 'technician') ?? organisation.people[0];
+    if (!worker) continue;
+    const technician = { id: known(plant.people, worker.email, 'the person').id, name: worker.name };
+    for (const plan of organisation.sites) {
+      const history = histories.find((h) => h.site.plan === plan);
+      if (!history) continue;
+      await writeStates(tx, history);
+      await writeRollCall(tx, history.site, technician, history);
+      await writeCommands(tx, history.site, history);
+      await writeShutdownTests(tx, fleet, history.site, technician.name);
+    }
+  }
+  await writeNewestRows(tx);
+  await writeLastHeard(tx, plant, histories);
+  await tx.raw(
+    `insert into rollup_watermark (quarter) values (date_bin('15 min', to_timestamp(?), '2000-01-01Z'))
+     on conflict (only_row) do update set quarter = excluded.quarter`,
+    [untilS],
+  );
+}
