@@ -1,3 +1,4 @@
+import { spawnSync } from 'node:child_process';
 import fs from 'node:fs';
 import path from 'node:path';
 import process from 'node:process';
@@ -16,6 +17,12 @@ function versionsUnder(base) {
     .sort((a, b) => Number(b) - Number(a));
 }
 
+function fitsVersion(dir, wanted) {
+  const { stdout } = spawnSync(path.join(dir, 'initdb'), ['--version'], { encoding: 'utf8' });
+  const major = /(\d+)(\.|\s|$)/.exec(stdout ?? '')?.[1];
+  return wanted ? major === wanted : Number(major) >= OLDEST;
+}
+
 /**
  * The directory with PostgreSQL's server programs, or undefined. `wanted`: the major version of an existing
  * cluster, which only its own programs can open. WAKELINE_PG_BIN names a directory outright.
@@ -25,10 +32,9 @@ export function postgresPrograms(wanted) {
   if (named) return fs.existsSync(path.join(named, 'initdb')) ? named : undefined;
   const version = versionsUnder(BASE).find((v) => (wanted ? v === wanted : Number(v) >= OLDEST));
   if (version) return path.join(BASE, version, 'bin');
-  if (wanted) return undefined;
   return (process.env.PATH ?? '')
     .split(path.delimiter)
-    .find((dir) => dir && fs.existsSync(path.join(dir, 'initdb')));
+    .find((dir) => dir && fs.existsSync(path.join(dir, 'initdb')) && fitsVersion(dir, wanted));
 }
 
 async function apt(args, what) {
