@@ -56,18 +56,11 @@ export async function causeSites(tx: Tx, siteIds?: readonly number[]): Promise<C
        select distinct on (c.site_id, c.zone_id, c.transmitter_id) c.site_id, c.zone_id, c.transmitter_id, c.in_force
        from command c where c.site_id in (select id from concerned)
        order by c.site_id, c.zone_id, c.transmitter_id, c.since desc),
-     placed as (
-       select sl.string_id, json_agg(json_build_object('position', sl.position, 'serial', u.serial) order by sl.position) as units
-       from slot sl
-       join placement p on p.slot_id = sl.id and p.placed_to is null
-       join unit u on u.id = p.unit_id
-       where sl.site_id in (select id from concerned)
-       group by sl.string_id),
-     served as (
+     served as materialized (
        select ts.string_id, json_agg(t.name order by t.name) as names
        from transmitter_string ts join transmitter t on t.id = ts.transmitter_id
        where ts.site_id in (select id from concerned) group by ts.string_id),
-     radio as (
+     radio as materialized (
        select logger_id, json_object_agg(number, name) as names from gateway
        where site_id in (select id from concerned) group by logger_id),
      wired as (
@@ -87,7 +80,12 @@ export async function causeSites(tx: Tx, siteIds?: readonly number[]): Promise<C
        left join logger l on l.id = s.logger_id
        left join radio on radio.logger_id = s.logger_id
        left join served on served.string_id = s.id
-       left join placed on placed.string_id = s.id
+       left join lateral (
+         select json_agg(json_build_object('position', sl.position, 'serial', u.serial) order by sl.position) as units
+         from slot sl
+         join placement p on p.slot_id = sl.id and p.placed_to is null
+         join unit u on u.id = p.unit_id
+         where sl.string_id = s.id) placed on true
        left join string_state st on st.string_id = s.id
        left join string_judgement j on j.string_id = s.id
        where s.site_id in (select id from concerned)
