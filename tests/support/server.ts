@@ -1,25 +1,9 @@
 import { fork } from 'node:child_process';
-import { createServer } from 'node:net';
 import { fileURLToPath } from 'node:url';
+import { freePort } from '../../src/server/up/processes.mjs';
 import type { TestDatabase } from './database';
 
 const SERVE = fileURLToPath(new URL('../../src/server/serve.mjs', import.meta.url));
-
-/** A TCP port that was free a moment ago. */
-export function freePort(): Promise<number> {
-  return new Promise((resolve, reject) => {
-    const probe = createServer();
-    probe.once('error', reject);
-    probe.listen(0, '127.0.0.1', () => {
-      const address = probe.address();
-      probe.close(() =>
-        typeof address === 'object' && address
-          ? resolve(address.port)
-          : reject(new Error('The system gave no port.')),
-      );
-    });
-  });
-}
 
 export interface RunningSite {
   /** http://127.0.0.1:PORT */
@@ -27,12 +11,15 @@ export interface RunningSite {
   port: number;
   /** What the process said, for a failing test. */
   output(): string;
-  stop(): Promise<void>;
+  /** Ends it as a service manager would; gives its exit code. */
+  stop(): Promise<number | null>;
+  /** Ends it as a power cut would. */
+  kill(): Promise<void>;
 }
 
 /** The built site as a process of its own, on a test's database. Stop it before the database is dropped. */
 export async function startSite(db: TestDatabase, env: Record<string, string> = {}): Promise<RunningSite> {
-  const port = await freePort();
+  const port = Number(env.PORT ?? (await freePort(0)));
   const child = fork(SERVE, [], {
     env: {
       ...process.env,
@@ -62,6 +49,11 @@ export async function startSite(db: TestDatabase, env: Record<string, string> = 
     output: () => said,
     stop: async () => {
       child.kill('SIGTERM');
+      await ended;
+      return child.exitCode;
+    },
+    kill: async () => {
+      child.kill('SIGKILL');
       await ended;
     },
   };
