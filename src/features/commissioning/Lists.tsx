@@ -36,7 +36,7 @@ export function MissingSheet({
       ),
     },
     { key: 'position', label: 'Position', numeric: true, cell: (u) => u.position },
-    { key: 'serial', label: 'Serial', cell: (u) => u.serial },
+    { key: 'serial', label: 'Serial', className: 'whitespace-nowrap', cell: (u) => u.serial },
     {
       key: 'place',
       label: 'Place on the roof',

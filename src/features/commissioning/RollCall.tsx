@@ -1,4 +1,4 @@
-import { useCallback, useRef } from 'react';
+import { useCallback, useMemo, useRef } from 'react';
 import { useQuery } from '@tanstack/react-query';
 import { Caution } from '../../components/ui/Caution';
 import { Heading } from '../../components/ui/Heading';
@@ -59,9 +59,12 @@ export function RollCall({ initial, mayRun, view }: Props) {
   const lost = [roll, site].find((s) => !s.live && s.since);
   const now = useNow(initial.at, 5000);
 
-  const tally = tallyOf(page);
+  const tally = useMemo(() => tallyOf(page), [page]);
   const open = page.run !== null && page.run.stoppedAt === null;
-  const outlook = open && page.run ? outlookOf(tally, page.run, now) : null;
+  const outlook = useMemo(
+    () => (page.run && !page.run.stoppedAt ? outlookOf(tally, page.run, now) : null),
+    [tally, page.run, now],
+  );
   const words = rollCallWords(tally, page.run, outlook, page.site.timeZone);
   const waits = page.passesUntilHeard.length > 0 && tally.missing.length > 0;
   return (
@@ -88,24 +91,26 @@ export function RollCall({ initial, mayRun, view }: Props) {
           </Notice>
         </div>
       )}
-      <div className="grid gap-5 lg:grid-cols-[minmax(0,1fr)_340px] xl:grid-cols-[220px_minmax(0,1fr)_340px]">
-        <div className="order-3 lg:col-span-2 xl:order-1 xl:col-span-1">
-          <KnownSteps page={page} tally={tally} open={open} />
-        </div>
-        <div className="order-2 grid min-w-0 content-start gap-5">
-          <CurveSheet page={page} tally={tally} now={now} outlook={outlook} />
-          <StringsSheet siteId={siteId} tally={tally} view={view} />
-          <MissingSheet tally={tally} started={page.run !== null} siteId={siteId} />
-        </div>
-        <div className="order-1 grid content-start gap-5 lg:order-2 xl:order-3">
+      <div className="grid gap-5 lg:grid-cols-[minmax(0,1fr)_340px] lg:grid-rows-[auto_auto_1fr] xl:grid-cols-[200px_minmax(0,1fr)_340px] xl:grid-rows-[auto_1fr]">
+        <div className="grid content-start gap-5 lg:col-start-2 lg:row-start-2 xl:col-start-3 xl:row-start-1">
           {waits && (
             <Caution strong="Until they have answered, units of this type pass full module voltage">
               and do not obey the initiator. Treat every string as live.
             </Caution>
           )}
           <RunPanel page={page} mayRun={mayRun} roster={tally.roster} onChanged={again} />
+        </div>
+        <div className="grid min-w-0 content-start gap-5 lg:col-start-1 lg:row-span-2 lg:row-start-2 xl:col-start-2 xl:row-start-1">
+          <CurveSheet page={page} tally={tally} now={now} outlook={outlook} />
+          <StringsSheet siteId={siteId} tally={tally} view={view} />
+          <MissingSheet tally={tally} started={page.run !== null} siteId={siteId} />
+        </div>
+        <div className="grid content-start gap-5 lg:col-start-2 lg:row-start-3 xl:col-start-3 xl:row-start-2">
           <UnknownSheet page={page} tally={tally} />
           <GatewaysSheet page={page} tally={tally} />
+        </div>
+        <div className="lg:col-span-2 lg:row-start-1 xl:col-span-1 xl:col-start-1 xl:row-span-2">
+          <KnownSteps page={page} tally={tally} open={open} />
         </div>
       </div>
     </>

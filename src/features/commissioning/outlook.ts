@@ -1,12 +1,45 @@
+import { forecastRollCall, type ForecastPoint } from '../../domain/commissioning/roll-call';
 import type { RollCallRun } from '../../schemas/api/roll-call';
 import type { RollTally } from './tally';
 import type { Outlook } from './words';
 
 export interface RollCallOutlook extends Outlook {
-  /** From now on, epoch seconds; units heard in all. */
-  curve: { atS: number; expected: number; low: number; high: number }[];
+  /** From now on, epoch seconds; units heard in all, those that have not stirred left out. */
+  curve: ForecastPoint[];
 }
 
-export function outlookOf(_tally: RollTally, _run: RollCallRun, _now: Date): RollCallOutlook | null {
-  return null;
+const seconds = (iso: string): number => new Date(iso).getTime() / 1000;
+
+/**
+ * What may be expected of a running roll call; null while too few have answered to say anything. Units that had
+ * answered before this start are left out of the pace: nobody timed them.
+ */
+export function outlookOf(tally: RollTally, run: RollCallRun, now: Date): RollCallOutlook | null {
+  const startedAtS = seconds(run.startedAt);
+  const timed = tally.units.filter((u) => !u.answer || seconds(u.answer.at) >= startedAtS);
+  const before = tally.units.length - timed.length;
+  const numbers = new Map(tally.gateways.map((g, i) => [g.name, i]));
+  const forecast = forecastRollCall({
+    startedAtS,
+    nowS: now.getTime() / 1000,
+    units: timed.map((u) => ({
+      group: u.stringName,
+      // which gateway would hear a unit is learned, not drawn: of the others nothing is known
+      gateway: u.answer ? (numbers.get(u.answer.gateway) ?? null) : null,
+      heardAtS: u.answer ? seconds(u.answer.at) : null,
+      serial: u.serial,
+    })),
+  });
+  if (forecast.curve.length === 0) return null;
+  return {
+    expected: Math.round(forecast.expectedTotal - forecast.heard),
+    by: forecast.expectedByS === null ? null : new Date(forecast.expectedByS * 1000).toISOString(),
+    notStirred: forecast.notStirred.map(({ kind, group, units }) => ({ kind, group, units })),
+    curve: forecast.curve.map((p) => ({
+      atS: p.atS,
+      expected: p.expected + before,
+      low: p.low + before,
+      high: p.high + before,
+    })),
+  };
 }

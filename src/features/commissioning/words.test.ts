@@ -162,7 +162,9 @@ describe('the sentence of a roll call', () => {
     expect(said(some, null)).toBe('The roll call has not been started. Somebody on site starts it.');
   });
   it('running, with a forecast for some and groups that have not stirred', () => {
-    expect(said(some, run(), { expected: 1, by, notStirred: [{ group: 'A2', units: 2 }] })).toBe(
+    expect(
+      said(some, run(), { expected: 1, by, notStirred: [{ kind: 'string', group: 'A2', units: 2 }] }),
+    ).toBe(
       '1 of the 3 missing is expected by 14:11. A2’s 2 have not stirred: look at its gateway, its serials, or snow.',
     );
   });
@@ -172,13 +174,26 @@ describe('the sentence of a roll call', () => {
     );
   });
   it('running, several and many groups that have not stirred', () => {
-    const groups = ['B1', 'B2', 'B3', 'B4'].map((group) => ({ group, units: 14 }));
+    const groups = ['B1', 'B2', 'B3', 'B4'].map((group) => ({
+      kind: 'string' as const,
+      group,
+      units: 14,
+    }));
     expect(said(some, run(), { expected: 0, by: null, notStirred: groups.slice(0, 2) })).toBe(
       'No further answers are expected soon. B1’s 14 and B2’s 14 have not stirred: look at their gateway, their serials, or snow.',
     );
     expect(said(some, run(), { expected: 0, by: null, notStirred: groups })).toContain(
       '56 units of 4 strings have not stirred',
     );
+  });
+  it('running, a block of serials that has not stirred', () => {
+    expect(
+      said(some, run(), {
+        expected: 0,
+        by: null,
+        notStirred: [{ kind: 'serials', group: 'AA-0..', units: 3 }],
+      }),
+    ).toContain('None of the 3 units with serials AA-0… has stirred: compare their labels.');
   });
   it('running, nothing can be said yet', () => {
     expect(said(some, run())).toBe(

@@ -13,7 +13,7 @@ export interface Outlook {
   expected: number;
   by: string | null;
   /** Groups without a single answer, left out of the forecast. */
-  notStirred: { group: string; units: number }[];
+  notStirred: { kind: 'string' | 'gateway' | 'serials'; group: string; units: number }[];
 }
 
 export interface RollCallWords {
@@ -37,16 +37,22 @@ export function rollCallHeading(roster: number, heard: number): string {
 
 /** "B4's 14 have not stirred: look at its gateway, its serials, or snow." */
 function notStirred(groups: Outlook['notStirred']): string {
-  const first = groups[0];
-  if (!first) return '';
-  const who =
-    groups.length === 1
-      ? `${first.group}’s ${first.units}`
-      : groups.length <= 3
-        ? listed(groups.map((g) => `${g.group}’s ${g.units}`))
-        : `${number(groups.reduce((n, g) => n + g.units, 0))} units of ${groups.length} strings`;
-  const its = groups.length === 1 ? 'its gateway, its serials' : 'their gateway, their serials';
-  return `${who} have not stirred: look at ${its}, or snow.`;
+  const strings = groups.filter((g) => g.kind !== 'serials');
+  const [first] = strings;
+  const said: string[] = [];
+  if (first) {
+    const who =
+      strings.length <= 3
+        ? listed(strings.map((g) => `${g.group}’s ${g.units}`))
+        : `${number(strings.reduce((n, g) => n + g.units, 0))} units of ${strings.length} strings`;
+    const its = strings.length === 1 ? 'its gateway, its serials' : 'their gateway, their serials';
+    said.push(`${who} have not stirred: look at ${its}, or snow.`);
+  }
+  for (const g of groups.filter((other) => other.kind === 'serials'))
+    said.push(
+      `None of the ${g.units} units with serials ${g.group.replace(/\.\.$/, '…')} has stirred: compare their labels.`,
+    );
+  return said.join(' ');
 }
 
 function running(

@@ -35,9 +35,13 @@ describe('the life of a roof', () => {
     lostMinutes: 1560,
     lostMinutesGrid: 1380,
     completeness: 1,
+    countedFrom: null,
   };
   it('sums since switch-on', () => {
     expect(lifeCard(life).note).toBe('12 March 2026');
+    expect(lifeCard({ ...life, countedFrom: '2026-05-01' }).note).toBe(
+      '12 March 2026; counted from 1 May 2026',
+    );
     expect(lifeCard(null).note).toBe('not switched on yet');
   });
   it('gives the hours lost beside the share', () => {
@@ -97,19 +101,17 @@ describe('the switch and who looks after it', () => {
     ruleSet: 'rapid_shutdown_30s' as const,
   };
   it('always says not to rely on the page', () => {
-    expect(switchWords(site)).toContain('The switch is beside the meter cabinet.');
+    expect(switchWords(site)).toContain('Where the switch is: beside the meter cabinet.');
     for (const place of ['beside the meter cabinet', ''])
       expect(switchWords({ ...site, shutdownSwitchPlace: place })).toMatch(
         /never rely on this page.*stay live in light/,
       );
   });
-  it('names the person where one is recorded', () => {
-    expect(careWords({ organisation: 'Lowfield Solar Works', contact: 'Per Aalto', phone: '1' })).toBe(
-      'Per Aalto at Lowfield Solar Works looks after this roof.',
+  it('says who looks after the roof, and when no number is recorded', () => {
+    expect(careWords({ organisation: 'Lowfield Solar Works', phone: '1' })).toBe(
+      'Lowfield Solar Works looks after this roof.',
     );
-    expect(careWords({ organisation: 'Lowfield Solar Works', contact: '', phone: '' })).toContain(
-      'no telephone number',
-    );
+    expect(careWords({ organisation: 'Lowfield Solar Works', phone: '' })).toContain('no telephone number');
   });
   it('writes plain days without a zone', () => {
     expect(dayWords('2026-03-12')).toBe('12 March 2026');

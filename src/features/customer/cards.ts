@@ -37,7 +37,13 @@ export function monthCard(month: CustomerSite['month']): Card {
 
 export function lifeCard(life: CustomerSite['life']): Card {
   if (!life) return { label: 'Since switch-on', figure: '–', note: 'not switched on yet' };
-  return { label: 'Since switch-on', figure: energy(life.energy), note: dayWords(life.from) };
+  const label = 'Since switch-on';
+  if (!life.countedFrom) return { label, figure: energy(life.energy), note: dayWords(life.from) };
+  return {
+    label,
+    figure: energy(life.energy),
+    note: `${dayWords(life.from)}; counted from ${dayWords(life.countedFrom)}`,
+  };
 }
 
 export function workingTimeCard(life: CustomerSite['life']): Card {
@@ -86,18 +92,16 @@ export function testWords(
 /** Where the switch is and what to do with that, for every roof that has one. */
 export function switchWords(site: CustomerSite['site']): string {
   const where = site.shutdownSwitchPlace
-    ? `The switch is ${site.shutdownSwitchPlace}. In a fire, tell the crew it is there; never rely on this page.`
+    ? `Where the switch is: ${site.shutdownSwitchPlace}. In a fire, tell the crew it is there; never rely on this page.`
     : 'Where the switch is has not been recorded here. In a fire, tell the crew what you know; never rely on this page.';
   return `${where} Even shut down, modules and the cables at them stay live in light.`;
 }
 
-/** "Ask for Per Aalto" where a person is named. */
-export function careWords(care: CustomerSite['care']): string {
-  const who = care.contact ? `${care.contact} at ${care.organisation}` : care.organisation;
-  return care.phone
-    ? `${who} looks after this roof.`
-    : `${who} looks after this roof; no telephone number is recorded.`;
-}
+/** Who looks after the roof; the person recorded at the site is the owner's own and is not named here. */
+export const careWords = (care: CustomerSite['care']): string =>
+  care.phone
+    ? `${care.organisation} looks after this roof.`
+    : `${care.organisation} looks after this roof; no telephone number is recorded.`;
 
 /** What the dotted line is, so that nobody takes it for a promise. */
 export const clearDayWords = (from: CustomerSite['today']['clearFrom']): string =>

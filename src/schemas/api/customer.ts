@@ -52,7 +52,7 @@ export const customerSite = z.object({
     strings: z.int(),
     ruleSet: z.enum(['rapid_shutdown_30s', 'rapid_shutdown_10s', 'hazard_control', 'none']),
   }),
-  care: z.object({ organisation: z.string(), contact: z.string(), phone: z.string() }),
+  care: z.object({ organisation: z.string(), phone: z.string() }),
   now: customerNow,
   today: z.object({
     day,
@@ -74,6 +74,8 @@ export const customerSite = z.object({
   life: z
     .object({
       from: day,
+      /** The first day that is counted, where readings begin after switch-on. */
+      countedFrom: day.nullable(),
       energy: z.number(), // Wh
       workingTime: z.number().nullable(), // 0 … 1 of daylight minutes
       lostMinutes: z.number(),

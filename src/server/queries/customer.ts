@@ -15,8 +15,6 @@ export interface RoofRow {
   altitude: number;
   switchedOnOn: string | null;
   shutdownSwitchPlace: string;
-  contactName: string;
-  contactPhone: string;
   ruleSet: CustomerSite['site']['ruleSet'];
   organisation: string;
   organisationPhone: string | null;
@@ -45,8 +43,7 @@ export async function roofRows(tx: Tx, at: Date, ref?: string): Promise<RoofRow[
   const { rows } = await tx.raw<{ rows: RoofRow[] }>(
     `select site.id as "siteId", site.ref, site.name, site.place, site.time_zone as "timeZone",
             site.latitude, site.longitude, site.altitude, site.switched_on_on::text as "switchedOnOn",
-            site.shutdown_switch_place as "shutdownSwitchPlace", site.contact_name as "contactName",
-            site.contact_phone as "contactPhone", site.rule_set as "ruleSet",
+            site.shutdown_switch_place as "shutdownSwitchPlace", site.rule_set as "ruleSet",
             o.name as organisation, o.phone as "organisationPhone",
             (select count(*)::int from string s where s.site_id = site.id) as strings,
             built.modules, built.reporting,

@@ -111,6 +111,7 @@ function lifeOf(roof: RoofRow, days: DaysRow, today: number): CustomerSite['life
   const daylight = days.first && days.last ? daylightMinutes(roof, days.first, days.last) : 0;
   return {
     from,
+    countedFrom: days.first && days.first > from ? days.first : null,
     energy: days.energy + today,
     workingTime: daylight > 0 ? Math.max(0, 1 - days.lostMinutes / daylight) : null,
     lostMinutes: days.lostMinutes,
@@ -149,11 +150,7 @@ export async function customerSite(tx: Tx, ref: string, at: Date): Promise<Custo
       strings: roof.strings,
       ruleSet: roof.ruleSet,
     },
-    care: {
-      organisation: roof.organisation,
-      contact: roof.contactName,
-      phone: roof.contactPhone || (roof.organisationPhone ?? ''),
-    },
+    care: { organisation: roof.organisation, phone: roof.organisationPhone ?? '' },
     now: nowOf(roof, found(site, 'site'), at),
     today,
     month: {
