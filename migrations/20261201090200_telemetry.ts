@@ -187,6 +187,22 @@ export async function up(knex: Knex): Promise<void> {
       end loop;
     end $f$;
 
+    -- raw readings before this UTC day are given up, partition by partition; roll-ups stay
+    create function drop_days_before(d date) returns int4 language plpgsql security definer
+      set search_path = public as $f$
+    declare t text; part text; dropped int4 := 0;
+    begin
+      perform pg_advisory_xact_lock(727001);
+      foreach t in array array['string_frame', 'input_frame', 'inverter_frame', 'weather_frame'] loop
+        for part in select c.relname from pg_inherits i join pg_class c on c.oid = i.inhrelid
+                    where i.inhparent = t::regclass and right(c.relname, 8) < to_char(d, 'YYYYMMDD') loop
+          execute format('drop table %I', part);
+          dropped := dropped + 1;
+        end loop;
+      end loop;
+      return dropped;
+    end $f$;
+
     create function merge_values(a int2[], b int2[]) returns int2[] language sql immutable parallel safe as
       $f$ select array_agg(coalesce(x, y) order by o) from unnest(a, b) with ordinality u(x, y, o) $f$;
     create function sum_values(a int2[]) returns int4 language sql immutable parallel safe as
@@ -212,7 +228,7 @@ export async function up(knex: Knex): Promise<void> {
 
 export async function down(knex: Knex): Promise<void> {
   await knex.raw(`
-    drop function frame_power, frame_voltage, newest_seen, newest_values, sum_values, merge_values, ensure_days;
+    drop function frame_power, frame_voltage, newest_seen, newest_values, sum_values, merge_values, drop_days_before, ensure_days;
     drop table trace, site_day, site_quarter, string_day, rollup_watermark, rollup_dirty, weather_state, inverter_state, input_state,
       string_state, late_frame, string_quarter, weather_frame, inverter_frame, input_frame, string_frame;
   `);

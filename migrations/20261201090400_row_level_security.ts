@@ -146,8 +146,8 @@ export async function up(knex: Knex): Promise<void> {
     grant update on logger to wakeline_ingest;
     grant insert on event, audit_entry to wakeline_ingest;
     grant delete on rollup_dirty, late_frame to wakeline_ingest;
-    revoke execute on function ensure_days(date, date) from public;
-    grant execute on function ensure_days(date, date) to wakeline_ingest;
+    revoke execute on function ensure_days(date, date), drop_days_before(date) from public;
+    grant execute on function ensure_days(date, date), drop_days_before(date) to wakeline_ingest;
     grant select, insert, update, delete on rate_limit to wakeline_app;
     grant usage on all sequences in schema public to wakeline_app, wakeline_ingest;
   `);
@@ -168,7 +168,7 @@ export async function down(knex: Knex): Promise<void> {
       if exists (select from pg_roles where rolname = 'wakeline_app') then
         revoke all on all tables in schema public from wakeline_app, wakeline_ingest;
         revoke all on all sequences in schema public from wakeline_app, wakeline_ingest;
-        revoke all on function ensure_days(date, date) from wakeline_ingest;
+        revoke all on function ensure_days(date, date), drop_days_before(date) from wakeline_ingest;
         grant execute on function ensure_days(date, date) to public;
         revoke usage on schema public from wakeline_app, wakeline_ingest;
       end if;

@@ -92,8 +92,11 @@ export async function addRollCallEvent(
   });
 }
 
-/** Each serial's first answer at the site, oldest first; where the unit sits now, if it is on the as-built. */
-export async function answersOf(tx: Tx, siteId: number): Promise<HeardItem[]> {
+/**
+ * Each serial's first answer at the site, oldest first; where the unit sits now, if it is on the as-built. With
+ * `serials` only theirs.
+ */
+export async function answersOf(tx: Tx, siteId: number, serials?: readonly string[]): Promise<HeardItem[]> {
   const { rows } = await tx.raw<{
     rows: (Omit<HeardItem, 'at'> & { at: Date })[];
   }>(
@@ -104,9 +107,9 @@ export async function answersOf(tx: Tx, siteId: number): Promise<HeardItem[]> {
      left join slot sl on sl.id = p.slot_id
      left join string st on st.id = sl.string_id
      left join gateway g on g.logger_id = h.logger_id and g.number = h.gateway_number
-     where h.site_id = ?
+     where h.site_id = ? ${serials ? 'and h.serial = any (?::text[])' : ''}
      order by h.first_heard_at, h.serial`,
-    [siteId],
+    serials ? [siteId, [...serials]] : [siteId],
   );
   return rows.map((r) => ({ ...r, at: r.at.toISOString() }));
 }
