@@ -179,7 +179,7 @@ function welcome(address, simulatorPort, ready) {
   process.stdout.write(lines.join('\n') + '\n');
 }
 
-async function bringUpDemo(args, atEnd, launchSite) {
+async function bringUpDemo(args, atEnd, { prepare = () => Promise.resolve(), launchSite }) {
   const unknown = args.filter((arg) => arg !== '--fresh');
   if (unknown.length > 0)
     throw new Stop(
@@ -197,9 +197,12 @@ async function bringUpDemo(args, atEnd, launchSite) {
 
   const stage = await stageDatabase('demo');
   atEnd(stage.stop);
+  const prepared = prepare(); // goes on while the demo is written: two cores are better than one
+  prepared.catch(() => undefined);
   const addresses = await prepareDemo(stage, { fresh: args.includes('--fresh') });
   const env = settings(stage, addresses, { host, port, simulatorPort });
-  const site = await launchSite(env);
+  await prepared;
+  const site = launchSite(env);
   atEnd(() => end(site, 20_000));
   const siteEnded = endOf(site, 'The site');
   say(stage.hasDemo ? 'starting the site and the simulator' : 'starting the site');
@@ -217,30 +220,31 @@ async function bringUpDemo(args, atEnd, launchSite) {
 
 /** The demo from the build. */
 export function start(args, { atEnd }) {
-  return bringUpDemo(args, atEnd, async (env) => {
-    await buildIfStale();
-    const site = launch(process.execPath, ['src/server/serve.mjs'], {
-      cwd: root,
-      env: { ...env, NODE_ENV: 'production' },
-      stdio: ['ignore', 'pipe', 'pipe', 'ipc'],
-    });
-    show(site, 'site');
-    return site;
+  return bringUpDemo(args, atEnd, {
+    prepare: buildIfStale,
+    launchSite: (env) => {
+      const site = launch(process.execPath, ['src/server/serve.mjs'], {
+        cwd: root,
+        env: { ...env, NODE_ENV: 'production' },
+        stdio: ['ignore', 'pipe', 'pipe', 'ipc'],
+      });
+      show(site, 'site');
+      return site;
+    },
   });
 }
 
 /** The demo from the sources, reloaded as they change. */
 export function develop(args, { atEnd }) {
-  return bringUpDemo(args, atEnd, async (env) => {
-    const site = launch(
-      process.execPath,
-      ['node_modules/astro/astro.js', 'dev', '--host', env.HOST, '--port', env.PORT],
-      {
+  return bringUpDemo(args, atEnd, {
+    launchSite: (env) => {
+      const where = ['--host', env.HOST, '--port', env.PORT];
+      const site = launch(process.execPath, ['node_modules/astro/astro.js', 'dev', ...where], {
         cwd: root,
         env: { ...env, LOG_LEVEL: process.env.LOG_LEVEL || 'info' },
-      },
-    );
-    show(site, 'site');
-    return site;
+      });
+      show(site, 'site');
+      return site;
+    },
   });
 }
