@@ -46,6 +46,9 @@ export interface DiodeParameters {
   idealityVoltage: number;
 }
 
+/** W/m² below which there is no light: keeps tiny numbers from overflowing where they divide. */
+export const DARK = 1e-6;
+
 /** Refuses irradiance outside 0 to 2000 W/m² and cell temperature outside −90 to 150 °C. */
 export function checkOperation(poaGlobal: number, temperatureCell: number): void {
   within('poaGlobal', poaGlobal, 0, 2000, 'W/m²');
@@ -85,7 +88,7 @@ export function diodeParameters(
   const kelvinRef = STC.temperatureCell + KELVIN;
   const kelvin = temperatureCell + KELVIN;
   const bandGap = bandGapRef * (1 + bandGapSlope * rise);
-  const light = poaGlobal / STC.poaGlobal;
+  const light = poaGlobal < DARK ? 0 : poaGlobal / STC.poaGlobal;
   return {
     photocurrent: Math.max(0, light * (reference.photocurrentRef + alpha * rise)),
     saturationCurrent:

@@ -1,6 +1,7 @@
 import type { ModuleType } from '../../equipment/module-type';
 import { moduleFromDatasheet } from './datasheet';
 import {
+  DARK,
   KELVIN,
   STC,
   type DiodeParameters,
@@ -42,6 +43,7 @@ const BRIGHTEST = 1500;
 const DEGREES = 1;
 const DEGREES_MPP = 4;
 const COLUMNS = 64;
+const ROWS_MPP = (HOTTEST - COLDEST) / DEGREES_MPP + 1;
 
 /** Light enters the table of maximum power points by this scale: fine where it is dim, coarse where it is bright. */
 const scaleOf = (poaGlobal: number): number => Math.log(1 + poaGlobal / 2);
@@ -57,9 +59,8 @@ function saturationTable(reference: DiodeReference): Float64Array {
 
 /** vmp and imp per W/m² in pairs, a row per temperature, a column per step of light. */
 function mppTable(reference: DiodeReference): Float64Array {
-  const rows = (HOTTEST - COLDEST) / DEGREES_MPP + 1;
-  const table = new Float64Array(rows * COLUMNS * 2);
-  for (let row = 0; row < rows; row += 1) {
+  const table = new Float64Array(ROWS_MPP * COLUMNS * 2);
+  for (let row = 0; row < ROWS_MPP; row += 1) {
     for (let column = 0; column < COLUMNS; column += 1) {
       const poaGlobal = 2 * Math.expm1(SCALE_MIN + column * SCALE_STEP);
       const { vmp, imp } = maximumPowerPoint(
@@ -94,7 +95,7 @@ export function fastModuleFrom(reference: DiodeReference): FastModule {
     (poaGlobal / STC.poaGlobal) * (photocurrentRef + alphaIsc * (temperatureCell - STC.temperatureCell));
   const logIo = (temperatureCell: number): number => {
     const place = (temperatureCell - COLDEST) / DEGREES;
-    const row = Math.floor(place);
+    const row = Math.min(Math.floor(place), logSaturation.length - 2);
     const cold = logSaturation[row]!;
     return cold + (logSaturation[row + 1]! - cold) * (place - row);
   };
@@ -116,9 +117,10 @@ export function fastModuleFrom(reference: DiodeReference): FastModule {
     const a = ideality(temperatureCell);
     const io = logIo(temperatureCell);
     const leak = poaGlobal / (resistanceShuntRef * STC.poaGlobal);
-    let x = a * (Math.log(driven) - io);
-    x = a * (Math.log(driven - x * leak) - io);
-    return a * (Math.log(driven - x * leak) - io);
+    const taken = driven + Math.exp(io);
+    let x = a * (Math.log(taken) - io);
+    x = a * (Math.log(taken - x * leak) - io);
+    return a * (Math.log(taken - x * leak) - io);
   };
 
   return {
@@ -138,7 +140,7 @@ export function fastModuleFrom(reference: DiodeReference): FastModule {
       const across = (scaleOf(poaGlobal) - SCALE_MIN) / SCALE_STEP;
       const down = (temperatureCell - COLDEST) / DEGREES_MPP;
       const column = Math.min(Math.floor(across), COLUMNS - 2);
-      const row = Math.floor(down);
+      const row = Math.min(Math.floor(down), ROWS_MPP - 2);
       const right = across - column;
       const below = down - row;
       const at = (row * COLUMNS + column) * 2;
@@ -152,7 +154,7 @@ export function fastModuleFrom(reference: DiodeReference): FastModule {
     },
     voltageAt: (poaGlobal, temperatureCell, current) => {
       checkOperation(poaGlobal, temperatureCell);
-      if (poaGlobal === 0 && current > 0) return -Infinity;
+      if (poaGlobal < DARK && current > 0) return -Infinity;
       const photocurrent = light(poaGlobal, temperatureCell);
       const driven = photocurrent - current;
       if (!inTables(poaGlobal, temperatureCell) || !(driven > leastDriven * photocurrent)) {

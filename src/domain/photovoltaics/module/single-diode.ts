@@ -28,16 +28,16 @@ function currentAcross(p: DiodeParameters, x: number): number {
   return p.photocurrent - p.saturationCurrent * Math.expm1(x / p.idealityVoltage) - x / p.resistanceShunt;
 }
 
-/** Root of current(x) − drain·(x − from) − wanted, falling and concave in x. */
-function solve(p: DiodeParameters, start: number, drain: number, from: number, wanted: number): number {
+/** Root of weight·(current(x) − wanted) − pull·(x − from), falling and concave in x. */
+function solve(p: DiodeParameters, start: number, wanted: number, weight = 1, pull = 0, from = 0): number {
   const { idealityVoltage, photocurrent, saturationCurrent } = p;
-  const leak = 1 / p.resistanceShunt + drain;
+  const leak = weight / p.resistanceShunt + pull;
   let x = start;
   for (let step = 0; step < MAX_STEPS; step += 1) {
     const grown = saturationCurrent * Math.exp(x / idealityVoltage);
-    const value =
-      photocurrent + saturationCurrent - grown - x / p.resistanceShunt - drain * (x - from) - wanted;
-    const change = value / (grown / idealityVoltage + leak);
+    const current = photocurrent + saturationCurrent - grown - x / p.resistanceShunt;
+    const value = weight * (current - wanted) - pull * (x - from);
+    const change = value / ((weight * grown) / idealityVoltage + leak);
     x += change;
     if (Math.abs(change) <= 1e-13 * Math.max(Math.abs(x), 1e-3)) break;
   }
@@ -47,7 +47,7 @@ function solve(p: DiodeParameters, start: number, drain: number, from: number, w
 /** Open-circuit voltage, V. */
 export function vocOfDiode(p: DiodeParameters): number {
   if (p.photocurrent <= 0) return 0;
-  return solve(p, p.idealityVoltage * Math.log1p(p.photocurrent / p.saturationCurrent), 0, 0, 0);
+  return solve(p, p.idealityVoltage * Math.log1p(p.photocurrent / p.saturationCurrent), 0);
 }
 
 /**
@@ -67,8 +67,10 @@ export function currentAtVoltage(p: DiodeParameters, voltage: number): number {
   const ceiling =
     p.idealityVoltage *
     Math.log1p((p.photocurrent + Math.abs(voltage) / resistanceSeries) / p.saturationCurrent);
-  const x = solve(p, Math.min(linear, ceiling), 1 / resistanceSeries, voltage, 0);
-  return (x - voltage) / resistanceSeries;
+  const x = solve(p, Math.min(linear, ceiling), 0, resistanceSeries, 1, voltage);
+  // of the two ways to read the current off x, the one that an error in x moves less
+  const slope = (p.saturationCurrent / p.idealityVoltage) * Math.exp(x / p.idealityVoltage);
+  return slope * resistanceSeries < 1 ? currentAcross(p, x) : (x - voltage) / resistanceSeries;
 }
 
 /** Short-circuit current, A. */
@@ -85,7 +87,7 @@ export function iscOfDiode(p: DiodeParameters): number {
 export function voltageAtCurrent(p: DiodeParameters, current: number): number {
   if (!Number.isFinite(current)) throw new RangeError(`current must be finite, but is ${current}`);
   const driven = p.photocurrent - current;
-  if (driven + p.saturationCurrent <= 0 && p.resistanceShunt === Infinity) {
+  if (current > 0 && p.resistanceShunt === Infinity) {
     throw new RangeError(`current must not be above 0 A for a module in the dark, but is ${current}`);
   }
   const start =
@@ -95,7 +97,7 @@ export function voltageAtCurrent(p: DiodeParameters, current: number): number {
   const x =
     p.resistanceShunt === Infinity && driven < 0
       ? p.idealityVoltage * Math.log1p(driven / p.saturationCurrent)
-      : solve(p, start, 0, 0, current);
+      : solve(p, start, current);
   return x - current * p.resistanceSeries;
 }
 

@@ -1,6 +1,6 @@
-import { fallingRoot } from '../root';
+import { fallingRoot, peakOf } from '../root';
 import type { PowerPoint } from './curve';
-import { type SeriesString, powerPeaks } from './series';
+import type { SeriesString } from './series';
 
 /** Strings in parallel on one input: they share a voltage, their currents add. */
 export interface ParallelStrings {
@@ -12,7 +12,8 @@ export interface ParallelStrings {
   currentsAt: (voltage: number) => number[];
   /** V at a sum of currents in A, 0 up to what flows at 0 V. */
   voltageAt: (current: number) => number;
-  mpp: PowerPoint | null;
+  /** The maximum power point; null where the strings give no power. Searched anew at each call. */
+  maximumPowerPoint: () => PowerPoint | null;
 }
 
 /**
@@ -39,16 +40,28 @@ export function parallelStrings(strings: readonly SeriesString[]): ParallelStrin
     return current === 0 ? voc : fallingRoot((voltage) => currentAt(voltage) - current, 0, voc);
   };
 
-  const bends = strings.flatMap((string) => [
-    string.voc,
-    ...string.corners.map((corner) => string.voltageAt(corner)),
-    // just above 0 A, where units in shutdown let the voltage step down
-    string.voltageAt(Number.MIN_VALUE),
-  ]);
-  const best = powerPeaks(
-    [...bends.filter((voltage) => voltage < voc), voc],
-    (voltage) => voltage * currentAt(voltage),
-  )[0];
-  const mpp = best ? { v: best.at, i: best.value / best.at, p: best.value } : null;
-  return { voc, currentAt, currentsAt, voltageAt, mpp };
+  const maximumPowerPoint = (): PowerPoint | null => {
+    const bends = strings.flatMap((string) => [
+      string.voc,
+      ...string.corners.map((corner) => string.voltageAt(corner)),
+      // just above 0 A, where units in shutdown let the voltage step down
+      string.voltageAt(Number.MIN_VALUE),
+    ]);
+    const edges = [...new Set([0, ...bends.filter((voltage) => voltage > 0 && voltage < voc), voc])]
+      .sort((a, b) => a - b)
+      .map((voltage) => ({ voltage, current: currentAt(voltage) }));
+    // between two edges power is at most the upper voltage times the lower one's current: the most promising first
+    const spans = edges
+      .slice(1)
+      .map((upper, i) => ({ lower: edges[i]!, upper, most: upper.voltage * edges[i]!.current }))
+      .sort((a, b) => b.most - a.most);
+    let best = { at: 0, value: 0 };
+    for (const { lower, upper, most } of spans) {
+      if (most <= best.value) break;
+      const peak = peakOf((voltage) => voltage * currentAt(voltage), lower.voltage, upper.voltage);
+      if (peak.value > best.value) best = peak;
+    }
+    return best.value > 0 ? { v: best.at, i: best.value / best.at, p: best.value } : null;
+  };
+  return { voc, currentAt, currentsAt, voltageAt, maximumPowerPoint };
 }

@@ -228,6 +228,19 @@ export function seriesString(elements: readonly StringElement[], resistance = 0)
     .filter((corner) => corner > 0)
     .sort((a, b) => a - b);
   const most = corners[corners.length - 1] ?? 0;
+  let cornerVoltages: number[] | null = null;
+  /** The corners between which a voltage below voc lies, A; the upper one is null beyond the last. */
+  const bracket = (voltage: number): [low: number, high: number | null] => {
+    cornerVoltages ??= corners.map(voltageAt);
+    let low = 0;
+    let high = corners.length;
+    while (low < high) {
+      const middle = (low + high) >> 1;
+      if (cornerVoltages[middle]! > voltage) low = middle + 1;
+      else high = middle;
+    }
+    return [corners[low - 1] ?? 0, corners[low] ?? null];
+  };
 
   const currentAt = (voltage: number): number => {
     within('voltage', voltage, -1e5, 1e5, 'V');
@@ -237,15 +250,14 @@ export function seriesString(elements: readonly StringElement[], resistance = 0)
       while (back > -CURRENT_LIMIT && voltageAt(back) < voltage) back = Math.max(-CURRENT_LIMIT, back * 4);
       return fallingRoot((current) => voltageAt(current) - voltage, back, 0);
     }
-    // beyond the last corner only the series resistance (or nothing) limits the current
-    let forward = Math.max(most, 1e-3);
-    if (resistance > 0 || voltage < 0) {
-      while (forward < CURRENT_LIMIT && voltageAt(forward) > voltage) {
-        forward = Math.min(CURRENT_LIMIT, forward * 2);
-      }
+    const [low, corner] = bracket(voltage);
+    let high = corner ?? Math.max(most, 1e-3);
+    if (corner === null && (resistance > 0 || voltage < 0)) {
+      // beyond the last corner only the series resistance (or nothing) limits the current
+      while (high < CURRENT_LIMIT && voltageAt(high) > voltage) high = Math.min(CURRENT_LIMIT, high * 2);
     }
-    const least = Number.MIN_VALUE;
-    return fallingRoot((current) => voltageAt(Math.max(current, least)) - voltage, 0, forward);
+    // at exactly 0 A units in shutdown stand higher than under the least current
+    return fallingRoot((current) => voltageAt(Math.max(current, Number.MIN_VALUE)) - voltage, low, high);
   };
 
   return {

@@ -7,10 +7,23 @@ const LAST_MS = Date.UTC(2101, 0, 1);
 const J2000_MS = Date.UTC(2000, 0, 1, 12);
 const SIDEREAL_DEGREES_PER_MS = 360.98564736629 / 86_400_000;
 
+/** What moon and planets add to the longitude, degrees: the largest short terms of SPA's table A4.2. */
+function pull(centuries: number): number {
+  const t = centuries / 10;
+  return (
+    0.002 * Math.cos(2.7441 + 5753.3849 * t) +
+    0.0018 * Math.cos(3.6277 + 77713.7715 * t) +
+    0.00153 * Math.cos(4.4181 + 7860.4194 * t) +
+    0.00134 * Math.cos(6.1352 + 3930.2097 * t) +
+    0.00076 * Math.cos(0.7425 + 11506.7698 * t) +
+    0.00073 * Math.cos(2.0371 + 529.691 * t)
+  );
+}
+
 /**
- * Where the sun stands, about twenty times faster than `solarPosition` and within 0.01° of it (tested) for the years
- * 1950 to 2100: J. Meeus, Astronomical Algorithms, ch. 25 "low accuracy", with the largest nutation term and the sun's
- * parallax. For bulk work over many sites and minutes.
+ * Where the sun stands, about ten times faster than `solarPosition` and within 0.007° of it (tested) for the years
+ * 1950 to 2100: J. Meeus, Astronomical Algorithms, ch. 25 "low accuracy", with the largest terms of nutation, moon
+ * and planets, and the sun's parallax. For bulk work over many sites and minutes.
  *
  * @param epochMs ms since 1970-01-01T00:00Z
  * @throws RangeError naming the parameter
@@ -35,7 +48,7 @@ export function solarPositionQuick(epochMs: number, place: Place, air: Air = {})
     (1.000001018 * (1 - eccentricity * eccentricity)) / (1 + eccentricity * Math.cos(trueAnomaly));
   const node = (125.04 - 1934.136 * t) * RADIANS;
   const nutation = -0.00478 * Math.sin(node);
-  const longitude = (meanLongitude + centre - 0.00569 + nutation) * RADIANS;
+  const longitude = (meanLongitude + centre + pull(t) - 0.00569 + nutation) * RADIANS;
   const obliquity = (23.4392911 - t * 0.0130042 + 0.00256 * Math.cos(node)) * RADIANS;
 
   const sinLongitude = Math.sin(longitude);
