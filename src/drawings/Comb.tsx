@@ -133,7 +133,7 @@ export function Comb({ id, slots, width = 252, height = 22, paint = SCREEN }: Pr
       viewBox={`0 0 ${g.width} ${height}`}
       role="img"
       aria-label={combInWords(slots, g.teeth)}
-      style={{ display: 'block', maxWidth: '100%' }}
+      style={{ maxWidth: '100%' }}
       shapeRendering="crispEdges"
     >
       <defs>

@@ -50,7 +50,7 @@ export function DayCurve({ made, clear, label, width = 860, height = 250, paint 
       width="100%"
       role="img"
       aria-label={label}
-      style={{ display: 'block', height: 'auto' }}
+      style={{ height: 'auto' }}
     >
       <path d={`M${plot.left} ${plot.bottom}H${plot.right}`} stroke={paint.rule} />
       {pieces(inside(made)).map((piece) => {

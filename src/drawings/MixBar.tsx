@@ -74,7 +74,7 @@ export function MixBar({ id, counts, width = 190, height = 16, paint = SCREEN }:
       viewBox={`0 0 ${width} ${height}`}
       role="img"
       aria-label={`${number(counts.units)} units: ${parts.map((p) => `${number(p.units)} ${MIX_WORDS[p.part]}`).join(', ') || 'none'}`}
-      style={{ display: 'block', maxWidth: '100%' }}
+      style={{ maxWidth: '100%' }}
     >
       <defs>
         <Hatch id={`${id}-hatch`} colour={paint.slate} step={5} />

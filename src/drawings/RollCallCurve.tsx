@@ -56,7 +56,7 @@ export function RollCallCurve({
       width="100%"
       role="img"
       aria-label={`${heardAtS.length} of ${total} units heard after ${Math.round(nowS / 60)} minutes${last ? `; ${Math.round(last.expected)} expected after ${Math.round(last.atS / 60)} minutes` : ''}.`}
-      style={{ display: 'block', height: 'auto' }}
+      style={{ height: 'auto' }}
     >
       {levels.map((v) => (
         <g key={v}>

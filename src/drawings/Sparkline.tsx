@@ -20,14 +20,7 @@ export function Sparkline({ values, label, width = 96, height = 20, paint = SCRE
   const points = values.map((value, i) => ({ value, i }));
   const last = points.findLast((p) => p.value !== null);
   return (
-    <svg
-      width={width}
-      height={height}
-      viewBox={`0 0 ${width} ${height}`}
-      role="img"
-      aria-label={label}
-      style={{ display: 'block' }}
-    >
+    <svg width={width} height={height} viewBox={`0 0 ${width} ${height}`} role="img" aria-label={label}>
       {pieces(points).map((piece) => (
         <path
           key={piece[0]?.i}

@@ -213,7 +213,7 @@ export function Staircase({
       role="img"
       aria-label={staircaseInWords(g, input)}
       className={className}
-      style={{ display: 'block', height: 'auto' }}
+      style={{ height: 'auto' }}
     >
       <defs>
         <Hatch id={`${id}-hatch`} colour={paint.slate} step={6} />

@@ -54,7 +54,7 @@ export function Walk({ outline, strings, width = 680, paint = SCREEN }: Props) {
       width="100%"
       role="img"
       aria-label={`Roof with the path of ${listed(placed.map((s) => s.name))}. ${words}`}
-      style={{ display: 'block', height: 'auto' }}
+      style={{ height: 'auto' }}
     >
       {outline.length > 2 && (
         <path

@@ -156,10 +156,12 @@ export function staircaseGeometry(input: StaircaseInput, width: number, height: 
   }
 
   const reached = untold ? input.voltage : level;
-  const short = expectedTotal !== null && reached !== null ? expectedTotal - reached : 0;
+  // what a silent or unheard unit gives is not known, so it is not missing either
+  const unknown = untold ? 0 : slots.reduce((sum, s) => sum + (rise(s) === null ? (s.expected ?? 0) : 0), 0);
+  const short = expectedTotal !== null && reached !== null ? expectedTotal - unknown - reached : 0;
   const gap =
     expectedTotal && reached !== null && short > expectedTotal * GAP_FROM
-      ? { volts: short, yExpected: y(expectedTotal), yMeasured: y(reached) }
+      ? { volts: short, yExpected: y(reached + short), yMeasured: y(reached) }
       : null;
   const units = slots.filter((s) => s.serial !== null).length;
   return {

@@ -61,7 +61,8 @@ function useNarrow(ref: { current: HTMLElement | null }): boolean {
   return narrow;
 }
 
-const TOOL = 'target rounded px-2 text-sm text-ink-2 underline-offset-2 hover:text-ink hover:underline';
+const TOOL =
+  'target min-w-[28px] rounded px-2 text-sm text-ink-2 underline-offset-2 hover:text-ink hover:underline';
 
 /**
  * The one chart over time: crosshair with a readout, zoom, gaps as gaps, nights, expected band, marks, the figures as a

@@ -1,9 +1,11 @@
 import type { EChartsCoreOption } from 'echarts/core';
-import { quantity } from '../../drawings/numbers';
-import { clock, clockSeconds, shortDate } from '../../drawings/times';
+import { number, quantity } from '../../drawings/numbers';
+import { clock, clockSeconds, longDate, shortDate } from '../../drawings/times';
 import type { Colours } from './colours';
 import { fromWall, toWall } from './local-time';
 import { valueAt, type ChartBand, type ChartLine, type ChartModel } from './model';
+
+const FAMILY = '"Inter Tight Variable", system-ui, sans-serif';
 
 const escaped = (text: string): string =>
   text.replace(/[&<>"]/g, (c) => ({ '&': '&amp;', '<': '&lt;', '>': '&gt;', '"': '&quot;' })[c] ?? c);
@@ -15,7 +17,7 @@ export function momentWords(atS: number, model: Pick<ChartModel, 'from' | 'to' |
   if (spanS <= 36 * 3600) return clock(atS * 1000, model.timeZone);
   if (spanS <= 60 * 86_400)
     return `${shortDate(atS * 1000, model.timeZone)}, ${clock(atS * 1000, model.timeZone)}`;
-  return shortDate(atS * 1000, model.timeZone);
+  return longDate(atS * 1000, model.timeZone);
 }
 
 /** The readout at one instant: name and value of each line, the band, the marks that hold then. */
@@ -94,23 +96,29 @@ function lineSeries(line: ChartLine, model: ChartModel, c: Colours) {
   };
 }
 
-/** Marks that have room for their words: the grave ones first, none within a ninth of the span of another. */
-function labelled(model: ChartModel): Set<number> {
+/**
+ * Marks that have room for their words, and on which side of them: the grave ones first, none within a fifth of the span
+ * of another on its side. Stretches speak to the left, instants to the right, while the edge leaves room.
+ */
+function labelled(model: ChartModel): Map<number, 'left' | 'right'> {
   const order = { crimson: 0, rust: 1, plum: 2, slate: 3, petrol: 4 } as const;
-  const chosen: number[] = [];
+  const span = model.to - model.from;
+  const sides = new Map<number, 'left' | 'right'>();
+  const free = (at: number, side: 'left' | 'right') =>
+    (side === 'left' ? at - model.from : model.to - at) > span * 0.2 &&
+    [...sides].every(([k, s]) => s !== side || Math.abs((model.marks[k]?.from ?? 0) - at) > span * 0.2);
   const by = model.marks.map((m, i) => ({ m, i })).sort((a, b) => order[a.m.tone] - order[b.m.tone]);
   for (const { m, i } of by) {
-    const room = (model.to - model.from) / 9;
-    if (chosen.length < 6 && chosen.every((k) => Math.abs((model.marks[k]?.from ?? 0) - m.from) > room))
-      chosen.push(i);
+    const liked = m.to === null ? (['right', 'left'] as const) : (['left', 'right'] as const);
+    const side = liked.find((s) => free(m.from, s));
+    if (side && sides.size < 6) sides.set(i, side);
   }
-  return new Set(chosen);
+  return sides;
 }
 
-function grounds(model: ChartModel, c: Colours) {
+function grounds(model: ChartModel, c: Colours, narrow: boolean) {
   const x = (at: number) => toWall(at, model.timeZone);
-  const withWords = labelled(model);
-  const middle = (model.from + model.to) / 2;
+  const sides = labelled(model);
   return {
     type: 'line',
     id: 'grounds',
@@ -150,22 +158,34 @@ function grounds(model: ChartModel, c: Colours) {
           width: m.to === null ? 1.3 : 0.8,
         },
         label: {
-          show: withWords.has(i),
-          formatter: `${clock(m.from * 1000, model.timeZone)} ${m.words}`,
-          position: 'insideEndTop',
+          show: sides.has(i) && !narrow,
+          formatter: `${(model.to - model.from > 36 * 3600 ? shortDate : clock)(m.from * 1000, model.timeZone)} ${m.words}`,
+          position: 'middle',
           rotate: 0,
-          align: m.from > middle ? 'right' : 'left',
-          verticalAlign: 'bottom',
-          distance: m.from > middle ? [6, -16] : [-6, -16],
+          align: sides.get(i) === 'left' ? 'right' : 'left',
+          padding: [m.to === null ? 0 : 44, 8, 0, 8],
           color: m.tone === 'rust' ? c['rust-ink'] : c[m.tone],
           fontSize: 12,
           fontWeight: 600,
-          fontFamily: 'inherit',
+          fontFamily: FAMILY,
         },
       })),
     },
   };
 }
+
+/** The clock within a day, the date at midnights and beyond. Ticks come as wall-clock times read as UTC. */
+function axisWords(model: ChartModel): (wallMs: number) => string {
+  const spanS = model.to - model.from;
+  return (wallMs) => {
+    const midnight = wallMs % 86_400_000 === 0;
+    if (spanS <= 36 * 3600 || !midnight) return clock(wallMs, 'UTC');
+    if (spanS > 100 * 86_400 && new Date(wallMs).getUTCDate() === 1) return monthWords(wallMs);
+    return shortDate(wallMs, 'UTC');
+  };
+}
+const monthWords = (wallMs: number): string =>
+  new Date(wallMs).toLocaleDateString('en-GB', { month: 'short', year: '2-digit', timeZone: 'UTC' });
 
 /** Everything that the chart library is told. Pure but for the given colours. */
 export function chartOptions(model: ChartModel, c: Colours, narrow: boolean): EChartsCoreOption {
@@ -190,13 +210,7 @@ export function chartOptions(model: ChartModel, c: Colours, narrow: boolean): EC
       axisLabel: {
         ...text,
         hideOverlap: true,
-        formatter: {
-          year: '{yyyy}',
-          month: '{MMM}',
-          day: '{d} {MMM}',
-          hour: '{HH}:{mm}',
-          minute: '{HH}:{mm}',
-        },
+        formatter: axisWords(model),
       },
       axisPointer: { lineStyle: { color: c['ink-3'], type: 'solid', width: 1 } },
     },
@@ -207,7 +221,7 @@ export function chartOptions(model: ChartModel, c: Colours, narrow: boolean): EC
       nameGap: 12,
       nameTextStyle: { ...text, align: 'right', padding: [0, 8, 0, 0] },
       splitNumber: 4,
-      axisLabel: text,
+      axisLabel: { ...text, formatter: (v: number) => number(v, Number.isInteger(v) ? 0 : 1) },
       splitLine: { lineStyle: { color: c['rule-faint'] } },
     },
     tooltip: {
@@ -257,7 +271,7 @@ export function chartOptions(model: ChartModel, c: Colours, narrow: boolean): EC
         : [{ type: 'inside', zoomOnMouseWheel: 'ctrl', moveOnMouseWheel: false, filterMode: 'none' }]),
     ],
     series: [
-      grounds(model, c),
+      grounds(model, c, narrow),
       ...(model.band ? bandSeries(model.band, model, c.petrol, 0.16, 'band') : []),
       ...(model.spread ? bandSeries(model.spread, model, c['ink-3'], 0.22, 'spread') : []),
       ...model.lines.map((line) => lineSeries(line, model, c)),

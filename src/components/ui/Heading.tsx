@@ -41,7 +41,7 @@ export function Heading({ crumbs, finding, sentence, actions }: Props) {
           {finding}
         </h1>
         {sentence && (
-          <p className="mt-1 max-w-[62ch] text-[17px] leading-6 tracking-[-0.01em] text-ink-2 [&_strong]:font-semibold [&_strong]:text-ink sm:text-lg">
+          <p className="mt-1 max-w-[820px] text-[17px] leading-6 tracking-[-0.01em] text-ink-2 [&_strong]:font-semibold [&_strong]:text-ink sm:text-lg">
             {sentence}
           </p>
         )}

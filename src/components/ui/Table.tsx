@@ -56,7 +56,7 @@ export function Table<Row>({ caption, columns, rows, rowKey, sorting, onSort, em
                   key={column.key}
                   scope="col"
                   aria-sort={sorted ? (sorted.descending ? 'descending' : 'ascending') : undefined}
-                  className={`py-2 pr-4 align-bottom text-sm font-medium text-ink-2 last:pr-0 ${column.numeric ? 'text-right' : ''} ${column.from ? FROM[column.from] : ''}`}
+                  className={`py-2 pr-4 align-middle text-sm font-medium text-ink-2 last:pr-0 ${column.numeric ? 'text-right' : ''} ${column.from ? FROM[column.from] : ''}`}
                 >
                   {column.sortable && onSort ? (
                     <button

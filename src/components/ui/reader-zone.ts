@@ -1,5 +1,5 @@
 import { useSyncExternalStore } from 'react';
-import { clock, localDay } from '../../drawings/times';
+import { clock, clockOrDate, localDay, zoneName } from '../../drawings/times';
 
 const never = () => () => undefined;
 const browserZone = () => Intl.DateTimeFormat().resolvedOptions().timeZone;
@@ -13,3 +13,12 @@ export const clocksDiffer = (at: string | Date, timeZone: string, readerZone: st
   readerZone === null ||
   clock(at, timeZone) !== clock(at, readerZone) ||
   localDay(at, timeZone) !== localDay(at, readerZone);
+
+/** "13:51", "3 Nov, 13:51"; with the zone where the reader's clock shows something else. */
+export const siteClock = (
+  at: string,
+  now: string | Date,
+  timeZone: string,
+  readerZone: string | null,
+): string =>
+  `${clockOrDate(at, now, timeZone)}${clocksDiffer(at, timeZone, readerZone) ? ` ${zoneName(at, timeZone)}` : ''}`;

@@ -29,7 +29,8 @@ function shifted(day: string, days: number): string {
 function rangeInWords(history: StringHistory): string {
   const last = (history.to - 1) * 1000;
   if (history.range === 'day') return longDate(last, history.timeZone);
-  return `${shortDate(history.from * 1000, history.timeZone)} to ${longDate(last, history.timeZone)}`;
+  const first = history.range === 'year' ? longDate : shortDate;
+  return `${first(history.from * 1000, history.timeZone)} to ${longDate(last, history.timeZone)}`;
 }
 
 interface Props {

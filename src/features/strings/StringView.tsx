@@ -82,7 +82,7 @@ function Page({ page: initial, history }: Props) {
         sentence={<Words sentence={finding.sentence} />}
         actions={<NextStrings page={page} />}
       />
-      <div className="flex flex-col gap-2 empty:hidden">
+      <div className="-mt-3 mb-3 flex flex-col gap-2 empty:hidden">
         <LiveMark
           lostSince={!status.live && status.since ? status.since.toISOString() : null}
           timeZone={site.timeZone}

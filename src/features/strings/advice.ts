@@ -136,10 +136,13 @@ export function readingsOf(page: StringPage, finding: Finding): Readings {
 
 const placeOf = (slot: SlotNow): string =>
   slot.roofPlace
-    ? `${slot.position} is at ${slot.roofPlace.charAt(0).toLowerCase()}${slot.roofPlace.slice(1)}`
-    : `${slot.position}: its place on the roof is not entered`;
+    ? `${slot.position} (${slot.roofPlace.charAt(0).toLowerCase()}${slot.roofPlace.slice(1)})`
+    : `${slot.position}, whose place on the roof is not entered`;
+/** Where to go on the roof: four places at most, the table has the rest. */
 const walkTo = (slots: readonly SlotNow[]): string =>
-  `Walk: ${slots.slice(0, 4).map(placeOf).join('; ')}${slots.length > 4 ? `; and ${slots.length - 4} more in the table below` : ''}.`;
+  slots.length > 4
+    ? `Walk to ${slots.slice(0, 4).map(placeOf).join(', ')} and ${slots.length - 4} more, listed below.`
+    : `Walk to ${listed(slots.map(placeOf))}.`;
 const METER =
   'Have a qualified person measure the home run at the inverter end with a rated meter: + to −, + to earth, − to earth.';
 

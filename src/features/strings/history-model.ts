@@ -10,7 +10,7 @@ const TITLE = {
 
 /** Puts the finer part into the whole, in place of what the whole says of that time. */
 export function refined(whole: StringHistory, part: StringHistory | null): StringHistory {
-  if (!part || part.resolution === whole.resolution) return whole;
+  if (!part || part.resolution === whole.resolution || part.voltage.every((v) => v === null)) return whole;
   const outside = (at: number) => at < part.from || at > part.to;
   const pick = (values: readonly (number | null)[]) => values.filter((_, i) => outside(whole.at[i] ?? 0));
   const before = whole.at.filter((at) => at < part.from).length;
@@ -45,6 +45,20 @@ export function refined(whole: StringHistory, part: StringHistory | null): Strin
   };
 }
 
+const NIGHT_SHOWN_S = 5400;
+
+/** One day is shown from a little before sunrise to a little after sunset: nothing happens in between. */
+function daylight({ from, to, nights }: Pick<StringHistory, 'from' | 'to' | 'nights'>): {
+  from: number;
+  to: number;
+} {
+  const morning = nights.find(([since]) => since <= from)?.[1] ?? from;
+  const evening = nights.find(([, until]) => until >= to)?.[0] ?? to;
+  return evening > morning
+    ? { from: Math.max(from, morning - NIGHT_SHOWN_S), to: Math.min(to, evening + NIGHT_SHOWN_S) }
+    : { from, to };
+}
+
 /** A string's history as a chart. */
 export function historyChart(history: StringHistory): ChartModel {
   const coarse = history.resolution !== 'minute';
@@ -53,8 +67,7 @@ export function historyChart(history: StringHistory): ChartModel {
     unit: 'V',
     digits: 0,
     timeZone: history.timeZone,
-    from: history.from,
-    to: history.to,
+    ...(history.range === 'day' ? daylight(history) : { from: history.from, to: history.to }),
     lines: [
       { name: coarse ? 'Mean voltage' : 'Voltage', at: history.at, values: history.voltage, tone: 'ink' },
     ],
@@ -89,8 +102,7 @@ export function unitsChart(
     unit: units.unit,
     digits: DIGITS[units.quantity],
     timeZone: units.timeZone,
-    from: units.from,
-    to: units.to,
+    ...daylight(units),
     lines: units.lines.map((line) => ({
       name: `Position ${line.position}`,
       at: units.at,

@@ -76,6 +76,8 @@ function alive(held: readonly SlotNow[]): string {
   if (lit.length === 0 || lit.length !== held.length) return '';
   if (lit.length > 3)
     return ` Their own modules are alive: ${volts(Math.min(...lit))} or more at each input.`;
+  if (lit.length === 2 && volts(lit[0]) === volts(lit[1]))
+    return ` Their own modules are alive: ${volts(lit[0])} at each input.`;
   return lit.length === 1
     ? ` Its own module is alive: ${volts(lit[0])} at the input.`
     : ` Their own modules are alive: ${listed(lit.map((v) => volts(v)))} at the inputs.`;

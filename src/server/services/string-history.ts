@@ -13,6 +13,7 @@ import type {
 } from '../../schemas/api/string';
 import type { Tx } from '../db/transaction';
 import { AppError } from '../errors';
+import { planeWords } from '../queries/now-mapping';
 import { siblingsOf, stringFacts, type StringFacts } from '../queries/string-facts';
 import {
   commandsOfZone,
@@ -78,9 +79,9 @@ function modelOf(facts: StringFacts): (at: number) => number | null {
 }
 
 const FROM_WORDS: Record<ExpectedHistory['from'], (facts: StringFacts) => string> = {
-  siblings: (f) => `other strings on the ${f.planeName}`,
+  siblings: (f) => `other strings on the ${planeWords(f.planeName)}`,
   siblings_and_model: (f) =>
-    `other strings on the ${f.planeName}; where they tell nothing, the datasheet under a clear sky`,
+    `other strings on the ${planeWords(f.planeName)}; where they tell nothing, the datasheet under a clear sky`,
   model: () => 'the datasheet under a clear sky, so the band is wide',
   nothing: () => '',
 };

@@ -3,6 +3,7 @@ import type { StringNow } from '../../schemas/api/now';
 import type { StringPage } from '../../schemas/api/string';
 import type { Tx } from '../db/transaction';
 import { stringsNow } from '../queries/now';
+import { planeWords } from '../queries/now-mapping';
 import { siblingsOf, stringFacts, stringNames, type StringFacts } from '../queries/string-facts';
 import { dayBounds, energyAgainst, eventsOfString } from '../queries/string-history';
 import { noSuchString } from './string-history';
@@ -44,7 +45,7 @@ async function lostToday(
   const due = median(others) * facts.units;
   const wh = due - own.wh;
   return wh > due * LOSS_FROM
-    ? { wh, since: from.toISOString(), against: `the other strings on the ${facts.planeName}` }
+    ? { wh, since: from.toISOString(), against: `the other strings on the ${planeWords(facts.planeName)}` }
     : null;
 }
 
