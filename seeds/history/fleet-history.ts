@@ -106,7 +106,7 @@ export async function seedHistory(tx: Knex.Transaction, fleet: FleetPlan, plant:
       if (!history) continue;
       await writeStates(tx, history);
       await writeRollCall(tx, history.site, technician, history);
-      await writeCommands(tx, history.site, history);
+      await writeCommands(tx, history.site, history, fleet.since);
       await writeShutdownTests(tx, fleet, history.site, technician.name);
     }
   }

@@ -1,5 +1,6 @@
 import type { Knex } from 'knex';
 import { keyOf, uniform } from '../../simulator/chance';
+import { firstReleasedS } from '../../simulator/plant/commands';
 import type { FleetPlan } from '../../simulator/plant/plan';
 import { insertRows, known } from '../plant/rows';
 import type { SeededPlant, SeededSite } from '../plant/seeded';
@@ -155,7 +156,12 @@ export async function writeRollCall(
 }
 
 /** What is in force in each zone and at each transmitter, and since when. */
-export async function writeCommands(db: Knex, site: SeededSite, history: SiteHistory): Promise<void> {
+export async function writeCommands(
+  db: Knex,
+  site: SeededSite,
+  history: SiteHistory,
+  sinceS: number,
+): Promise<void> {
   const { commands } = history.plant;
   const { plan } = site;
   const columns = {
@@ -166,9 +172,7 @@ export async function writeCommands(db: Knex, site: SeededSite, history: SiteHis
     since: 'timestamptz',
     said_by: 'text',
   };
-  const beganS = plan.switchedOnOn
-    ? Date.parse(plan.switchedOnOn) / 1000 + 9 * 3600
-    : history.plant.atS - 3600;
+  const beganS = firstReleasedS(plan, sinceS);
   const rows = [
     ...[...commands.zones].map(([name, c]) => ({ zone_id: known(site.zones, name, 'the zone'), ...c })),
     ...[...commands.transmitters].map(([name, c]) => ({

@@ -45,6 +45,16 @@ export class FaultBook {
     return this.known.faults;
   }
 
+  /** Puts other entries in the place of all. */
+  replace(entries: readonly FaultEntry[]): void {
+    this.entries.splice(0, this.entries.length, ...entries.map((e) => ({ ...e })));
+    this.made = entries.reduce(
+      (most, e) => Math.max(most, Number(/^F(\d+)$/.exec(e.id)?.[1] ?? 0)),
+      this.made,
+    );
+    this.known = null;
+  }
+
   /** Everything, for keeping between starts. */
   all(): readonly FaultEntry[] {
     return this.entries;

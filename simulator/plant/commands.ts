@@ -16,6 +16,10 @@ export interface Initiator {
   by: string;
 }
 
+/** When a site was released for the first time: nine o'clock (UTC) of its first day, or an hour before the fleet began. */
+export const firstReleasedS = (plan: SitePlan, since: number): number =>
+  plan.switchedOnOn === null ? since - 3600 : Date.parse(plan.switchedOnOn) / 1000 + 9 * 3600;
+
 /** Initiators, zones and transmitters: what is commanded where. */
 export class Commands {
   readonly initiators = new Map<string, Initiator>();
@@ -24,10 +28,12 @@ export class Commands {
   /** Counts changes, so that others see them. */
   version = 0;
 
+  /** @param since epoch seconds for which the fleet was laid out */
   constructor(
     private readonly plan: SitePlan,
-    fromS: number,
+    since: number,
   ) {
+    const fromS = firstReleasedS(plan, since);
     for (const i of plan.initiators) this.initiators.set(i.name, { open: false, since: fromS, by: i.name });
     for (const z of plan.zones)
       this.zones.set(z.name, { inForce: 'released', since: fromS, by: z.initiator });

@@ -87,7 +87,7 @@ export class SitePlant {
         ),
     );
     this.sky = new Sky(plan, seed, since);
-    this.commands = new Commands(plan, fromS);
+    this.commands = new Commands(plan, since);
     this.atS = fromS;
     this.gateways = plan.loggers.reduce((n, l) => n + l.gateways.length, 0);
     this.now = this.sky.at(fromS);
@@ -95,6 +95,9 @@ export class SitePlant {
       const until = f.untilS === undefined ? null : since - f.untilS;
       this.faults.add(f.fault, since - f.sinceS, until, `P${i + 1}`);
     });
+    this.toOpen = plan.openInitiators
+      .map((o) => ({ initiator: o.initiator, atS: since - o.sinceS, by: o.by }))
+      .sort((a, b) => a.atS - b.atS);
     if (plan.stage === 'operating')
       for (const s of plan.strings)
         for (const slot of s.slots) if (slot.serial !== null) this.heardSerials.add(slot.serial);
@@ -137,28 +140,45 @@ export class SitePlant {
     return this.strings.some(moving) || this.inverters.some((i) => i.starting);
   }
 
-  /** Moves the site on to `atS` (not before the last step). Returns whether any unit changed its mode. */
-  step(atS: number): boolean {
-    for (const o of this.plan.openInitiators) {
-      const openedS = this.since - o.sinceS;
-      if (openedS <= atS && (this.fresh || openedS > this.atS))
-        this.commands.setInitiator(o.initiator, true, openedS, o.by);
+  /** Initiators that the plan opens, first things first. */
+  private toOpen: { initiator: string; atS: number; by: string }[] = [];
+  private faultsSeen: Fault[] | null = null;
+
+  /** The plan's own events are past: somebody has gone on from there. */
+  forgetPlan(): void {
+    this.toOpen = [];
+  }
+
+  /** Lets initiators and faults take effect on what is commanded; true when the faults are others than before. */
+  refreshCommands(atS: number): boolean {
+    while (this.toOpen[0] && this.toOpen[0].atS <= atS) {
+      const { initiator, atS: openedS, by } = this.toOpen.shift()!;
+      this.commands.setInitiator(initiator, true, openedS, by);
     }
     const faults = this.faults.at(atS);
-    if (this.known?.faults !== faults) this.learn(faults);
+    const moved = faults !== this.faultsSeen;
+    this.faultsSeen = faults;
     this.commands.refresh(faults, atS);
+    return moved;
+  }
+
+  /** Moves the site on to `atS` (not before the last step). Returns the strings of which a unit changed its mode. */
+  step(atS: number): StringPlant[] {
+    this.refreshCommands(atS);
+    const faults = this.faults.at(atS);
+    if (this.known?.faults !== faults) this.learn(faults);
     this.now = this.sky.at(atS);
     if (this.asleep && this.now.elevation < DEEP_NIGHT) {
       this.atS = atS;
-      return false;
+      return [];
     }
     const elapsed = this.fresh ? Infinity : atS - this.atS;
     this.atS = atS;
     this.shine(faults, elapsed);
-    let changed = false;
+    const changed: StringPlant[] = [];
     for (const s of this.strings) {
       const mine = this.known?.byString.get(s);
-      if (mine && moveUnits(s, atS, this.commands, mine)) changed = true;
+      if (mine && moveUnits(s, atS, this.commands, mine)) changed.push(s);
     }
     if (this.fresh || elapsed > LONG_STEP_S) this.settleUnits(atS);
     this.fresh = false;
