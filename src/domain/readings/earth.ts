@@ -1,0 +1,100 @@
+import type { ReadingQuestion } from './reading';
+
+/** Readings to earth: is a conductor of the string in contact with it, and where? */
+
+export interface EarthFinding {
+  outcome: 'no_fault_seen' | 'fault' | 'cant_tell';
+  /** Chance of a fault to earth. */
+  probability: number;
+  /** The fault lies between these positions (0: at the negative end of the string, n: at the positive end). */
+  between: [number, number] | null;
+  /** How likely that place is, given a fault. */
+  placeProbability: number;
+  words: string;
+}
+
+/** One string in a hundred; from experience. */
+const PRIOR = 0.01;
+/** Of the string's voltage, what leakage and stray charge show to earth on a sound string: standard deviation. */
+const SOUND_SPREAD = 0.12;
+/** Spread of a module's voltage against its neighbours', relative. */
+const MISMATCH = 0.01;
+
+/**
+ * A sound string floats: to earth a meter shows little and it dies away. With a fault above module k the readings are
+ * those of the modules on either side and add up to the string's: −V(− to earth) : V(+ to earth) = k : (n − k). Needs
+ * like voltages on all modules: where some units pass and some don't, the place can't be told.
+ * Null when nothing was measured to earth or the string itself shows too little.
+ */
+export function earthFinding(question: ReadingQuestion, alike: boolean): EarthFinding | null {
+  const { earth, units: n, voltageV, meter } = question;
+  if (earth === null || (earth.positiveV === null && earth.negativeV === null)) return null;
+  const u = Math.abs(voltageV);
+  if (u < 1)
+    return {
+      outcome: 'cant_tell',
+      probability: PRIOR,
+      between: null,
+      placeProbability: 0,
+      words: 'The string shows too little voltage to tell anything about earth.',
+    };
+  const sign = voltageV < 0 ? -1 : 1;
+  const positive = earth.positiveV === null ? null : sign * earth.positiveV;
+  const negative = earth.negativeV === null ? null : -sign * earth.negativeV;
+  const density = (x: number, mean: number, sd: number): number =>
+    Math.exp(-0.5 * ((x - mean) / sd) ** 2) / sd;
+  const meterSd = (x: number): number => Math.hypot(meter.relativeSd * x, meter.sd, 0.003 * u);
+  const both = (forPositive: number, forNegative: number, sd: number): number =>
+    (positive === null ? 1 : density(positive, forPositive, Math.hypot(sd, meterSd(positive)))) *
+    (negative === null ? 1 : density(negative, forNegative, Math.hypot(sd, meterSd(negative))));
+  const sound = (1 - PRIOR) * both(0, 0, SOUND_SPREAD * u);
+  const places = Array.from({ length: n + 1 }, (_, k) => {
+    const below = (k / n) * u;
+    const sd = (u / n) * MISMATCH * Math.sqrt((k * (n - k)) / n) + 0.002 * u;
+    return (PRIOR / (n + 1)) * both(u - below, below, sd);
+  });
+  const faulty = places.reduce((s, p) => s + p, 0);
+  const probability = faulty / (faulty + sound);
+  const k = places.indexOf(Math.max(...places));
+  const placeProbability = faulty === 0 ? 0 : places[k]! / faulty;
+  // one of the two alone may be small because the fault is at that very end
+  const taken = positive !== null && negative !== null;
+  const outcome =
+    taken && probability >= 0.8 ? 'fault' : taken && probability <= 0.05 ? 'no_fault_seen' : 'cant_tell';
+  if (outcome !== 'fault')
+    return {
+      outcome,
+      probability,
+      between: null,
+      placeProbability: 0,
+      words:
+        outcome === 'no_fault_seen'
+          ? 'To earth the string floats: no fault seen. That is no insulation test.'
+          : taken
+            ? 'The readings to earth fit neither a sound string nor a clear fault: take both again, and wait until they settle.'
+            : 'One reading to earth is not enough: take both, + to earth and − to earth.',
+    };
+  const place: [number, number] = reversedPlace(k, n, voltageV);
+  const sure = alike && placeProbability >= 0.5;
+  return {
+    outcome,
+    probability,
+    between: sure ? place : null,
+    placeProbability: alike ? placeProbability : 0,
+    words: sure
+      ? `A conductor touches earth ${wordsAt(place[0], n)}. Do not connect the string.`
+      : 'A conductor of the string touches earth; the place can not be told. Do not connect the string.',
+  };
+}
+
+const reversedPlace = (k: number, n: number, voltageV: number): [number, number] => {
+  const from = voltageV < 0 ? n - k : k;
+  return [from, Math.min(n, from + 1)];
+};
+
+const wordsAt = (from: number, n: number): string =>
+  from === 0
+    ? 'at the negative end, before position 1'
+    : from === n
+      ? `at the positive end, after position ${n}`
+      : `between positions ${from} and ${from + 1}`;
