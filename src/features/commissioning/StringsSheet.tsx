@@ -37,7 +37,6 @@ export function StringsSheet({ siteId, tally, view: initial }: Props) {
     {
       key: 'units',
       label: 'Units, from the negative end',
-      className: 'w-full',
       cell: (s) => <Comb id={`comb-${s.string.id}`} slots={heardSlots(s)} width={252} />,
     },
     {

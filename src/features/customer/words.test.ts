@@ -86,6 +86,20 @@ describe('a roof at work', () => {
     );
     expect(said(roof({ passing: 90, shutdown: 6 })).all).toContain('6 modules are not passing power yet.');
   });
+  it('claims nothing of modules that are silent', () => {
+    expect(said(roof({ passing: 93, silent: 3 })).heading).toBe(
+      'Your roof is making 31.0 kW. All 93 modules heard from are passing power.',
+    );
+    expect(said(roof({ passing: 90, silent: 3, stuck: 3, shutdown: 3 })).heading).toBe(
+      'Your roof is making 31.0 kW. 90 of 93 modules heard from are passing power.',
+    );
+    expect(said(roof({ passing: 0, silent: 96 })).heading).toBe(
+      'Your roof is making 31.0 kW. Its modules do not report just now.',
+    );
+    expect(said(roof({ modules: 1, reporting: 1, passing: 1 })).heading).toContain(
+      'The one module is passing power.',
+    );
+  });
   it('tells inverters with a fault, without grid, or held back', () => {
     expect(said(roof({ inverters: { total: 3, gridLost: 0, fault: 1, limited: 0 } })).all).toContain(
       '1 of 3 inverters reports a fault.',

@@ -35,15 +35,17 @@ function refusesToShutDown(now: CustomerNow): string {
   return 'part of it has not shut down';
 }
 
-/** What is known of the modules one by one, for a roof that works. */
+/** What is known of the modules one by one, for a roof that works. Of those that are silent nothing is claimed. */
 function modulesWords(now: CustomerNow): string {
   if (now.reporting === 0) return '';
-  if (now.passing < now.reporting)
-    return `${number(now.passing)} of ${counted(now.reporting, 'module')} ${is(now.passing)} passing power.`;
-  const which = now.reporting === now.modules ? '' : ' that report';
-  return now.passing === 1
-    ? `Its one module${which ? ' that reports' : ''} is passing power.`
-    : `All ${number(now.passing)} modules${which} are passing power.`;
+  const heard = now.reporting - now.silent - now.unheard;
+  if (heard <= 0) return 'Its modules do not report just now.';
+  const which = heard < now.reporting ? ' heard from' : heard < now.modules ? ' that report' : '';
+  if (now.passing < heard)
+    return `${number(now.passing)} of ${counted(heard, 'module')}${which} ${is(now.passing)} passing power.`;
+  return heard === 1
+    ? `The one module${which} is passing power.`
+    : `All ${number(heard)} modules${which} are passing power.`;
 }
 
 function outputWords(now: CustomerNow): string {
