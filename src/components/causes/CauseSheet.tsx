@@ -1,15 +1,15 @@
 import type { ReactNode } from 'react';
-import { energy, listed, percent } from '../../drawings/numbers';
-import { clockOrDate, fullTime, zoneName } from '../../drawings/times';
+import { energy, percent } from '../../drawings/numbers';
+import { fullTime } from '../../drawings/times';
 import type { Acknowledgement, AcknowledgeReply, SiteContact } from '../../schemas/api/fleet';
 import type { CauseNow } from '../../schemas/api/now';
 import { paths } from '../../schemas/paths';
 import { StateTag } from '../states/StateTag';
 import { Tag } from '../ui/Tag';
-import { clocksDiffer, useReaderZone } from '../ui/reader-zone';
+import { siteClock, useReaderZone } from '../ui/reader-zone';
 import { Acknowledge } from './Acknowledge';
 import { placesInWords, placesOf, positionsInWords } from './places';
-import { isHazard, treatAsLive } from './words';
+import { alternativesInWords, isHazard, treatAsLive } from './words';
 
 interface Props {
   cause: CauseNow;
@@ -20,7 +20,7 @@ interface Props {
   onTaken: (reply: AcknowledgeReply) => void;
   /** The site is what the page is about: it isn't named again. */
   ofThisSite?: boolean;
-  /** Below the words: the units one by one, say. */
+  /** Beside the words: the units one by one, say. */
   children?: ReactNode;
 }
 
@@ -64,48 +64,52 @@ export function CauseSheet({
 }: Props) {
   const readerZone = useReaderZone();
   const live = treatAsLive(cause);
-  const zone = clocksDiffer(cause.since, timeZone, readerZone) ? ` ${zoneName(cause.since, timeZone)}` : '';
   const facts = [
     cause.lossWhPerDay !== null && cause.lossWhPerDay > 0 ? `losing ${energy(cause.lossWhPerDay)} a day` : '',
     cause.confidence < 0.9 ? `${percent(cause.confidence)} sure` : '',
   ].filter(Boolean);
   return (
-    <article className="flex min-w-0 flex-col border-b border-t-2 border-b-rule border-t-ink bg-sheet px-[18px] py-4">
-      <div>
-        <CauseTag verdict={cause.verdict} />
-      </div>
-      <h3 className="mt-2.5 text-[17px] leading-6">{cause.headline}</h3>
-      <p className="mt-1 text-[15px] leading-[22px] text-ink-2">
-        {!ofThisSite && (
-          <>
-            <a href={paths.site(cause.siteId)}>{cause.siteName}</a>,{' '}
-          </>
+    <article
+      className={`min-w-0 border-b border-t-2 border-b-rule border-t-ink bg-sheet px-[18px] py-4 ${children ? 'grid gap-x-10 gap-y-3 lg:grid-cols-2' : ''}`}
+    >
+      <div className="min-w-0">
+        <div>
+          <CauseTag verdict={cause.verdict} />
+        </div>
+        <h3 className="mt-2.5 text-[17px] leading-6">{cause.headline}</h3>
+        <p className="mt-1 text-[15px] leading-[22px] text-ink-2">
+          {!ofThisSite && (
+            <>
+              <a href={paths.site(cause.siteId)}>{cause.siteName}</a>,{' '}
+            </>
+          )}
+          <Where cause={cause} />. {cause.evidence}
+          {live && <strong className="font-semibold text-ink"> {live}</strong>}
+        </p>
+        <p className="mt-2 text-sm text-ink-2">
+          since{' '}
+          <time dateTime={cause.since} title={fullTime(cause.since, timeZone)}>
+            {siteClock(cause.since, now, timeZone, readerZone)}
+          </time>
+          {facts.length > 0 && ` · ${facts.join(' · ')}`}
+        </p>
+        {cause.alternatives.length > 0 && (
+          <p className="mt-1 text-sm text-ink-2">
+            It could also be: {alternativesInWords(cause.alternatives)}.
+          </p>
         )}
-        <Where cause={cause} />. {cause.evidence}
-        {live && <strong className="font-semibold text-ink"> {live}</strong>}
-      </p>
-      <p className="mt-2 text-sm text-ink-2">
-        since{' '}
-        <time dateTime={cause.since} title={fullTime(cause.since, timeZone)}>
-          {clockOrDate(cause.since, now, timeZone)}
-          {zone}
-        </time>
-        {facts.length > 0 && ` · ${facts.join(' · ')}`}
-      </p>
-      {cause.alternatives.length > 0 && (
-        <p className="mt-1 text-sm text-ink-2">It could also be: {listed(cause.alternatives)}.</p>
-      )}
-      {children && <div className="mt-3">{children}</div>}
-      {isHazard(cause) && (
-        <Acknowledge
-          cause={cause}
-          contact={contact}
-          taken={taken}
-          now={now}
-          timeZone={timeZone}
-          onTaken={onTaken}
-        />
-      )}
+        {isHazard(cause) && (
+          <Acknowledge
+            cause={cause}
+            contact={contact}
+            taken={taken}
+            now={now}
+            timeZone={timeZone}
+            onTaken={onTaken}
+          />
+        )}
+      </div>
+      {children && <div className="min-w-0">{children}</div>}
     </article>
   );
 }

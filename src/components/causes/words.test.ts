@@ -1,7 +1,7 @@
 import { describe, expect, it } from 'vitest';
 import type { CauseNow } from '../../schemas/api/now';
 import { concerned, placesInWords, placesOf, positionsInWords } from './places';
-import { byGravity, GRAVITY, isHazard, partInWords, treatAsLive } from './words';
+import { alternativesInWords, byGravity, GRAVITY, isHazard, partInWords, treatAsLive } from './words';
 
 const unit = (stringName: string, position: number | null): CauseNow['units'][number] => ({
   stringId: `id-${stringName}`,
@@ -58,6 +58,13 @@ describe('what a cause says', () => {
     expect(treatAsLive({ verdict: 'not_shutting_down' })).toContain('as live');
     expect(treatAsLive({ verdict: 'unconfirmed' })).toContain('as live');
     for (const verdict of GRAVITY) expect(treatAsLive({ verdict }) ?? '').not.toMatch(/\bsafe\b/i);
+  });
+
+  it('strings what else it could be into one clause', () => {
+    expect(alternativesInWords(['A loose connector', 'The unit is defective', 'NEC says nothing'])).toBe(
+      'a loose connector, the unit is defective or NEC says nothing',
+    );
+    expect(alternativesInWords(['Its supply'])).toBe('its supply');
   });
 
   it('does not say a part twice', () => {

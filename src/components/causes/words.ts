@@ -32,3 +32,13 @@ export const partInWords = (part: NonNullable<CauseNow['sharedPart']>): string =
   const name = part.name.trim();
   return name.toLowerCase().startsWith(part.kind) ? name : `${part.kind} ${name}`;
 };
+
+/** "the unit is defective or a loose connector at the unit": what else it could be, in one clause. */
+export function alternativesInWords(alternatives: readonly string[]): string {
+  // a name in capitals keeps them
+  const inside = alternatives.map((a) =>
+    /^([A-Z][a-z]|A )/.test(a) ? a.charAt(0).toLowerCase() + a.slice(1) : a,
+  );
+  const last = inside.pop() ?? '';
+  return inside.length === 0 ? last : `${inside.join(', ')} or ${last}`;
+}

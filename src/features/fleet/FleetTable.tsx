@@ -1,6 +1,7 @@
 import { Notice } from '../../components/ui/Notice';
 import { Table, type Column } from '../../components/ui/Table';
 import { Button } from '../../components/ui/Button';
+import { useReaderZone } from '../../components/ui/reader-zone';
 import { MixBar } from '../../drawings/MixBar';
 import { number, percent, power } from '../../drawings/numbers';
 import type { FleetView } from '../../schemas/api/fleet';
@@ -12,7 +13,7 @@ import { readsFromA } from './view';
 const STAGE = { commissioning: 'Commissioning', operating: 'Operating' } as const;
 
 function Open({ line, now }: { line: FleetLine; now: Date }) {
-  const words = openAt(line.site, line.causes, now);
+  const words = openAt(line.site, line.causes, now, useReaderZone());
   return <span className={words === 'nothing' ? 'text-ink-2' : ''}>{words}</span>;
 }
 

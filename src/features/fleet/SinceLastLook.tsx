@@ -1,6 +1,7 @@
 import { useState } from 'react';
 import { Sheet } from '../../components/ui/Sheet';
-import { clockOrDate, fullTime, zoneName } from '../../drawings/times';
+import { fullTime } from '../../drawings/times';
+import { siteClock, useReaderZone } from '../../components/ui/reader-zone';
 import type { SinceLastLook as Missed } from '../../schemas/api/fleet';
 import { paths } from '../../schemas/paths';
 import { missedInWords } from './missed';
@@ -9,6 +10,7 @@ import { SEEN_COOKIE } from './seen';
 /** For whoever comes back: what happened meanwhile, the gravest first, until they have said that they saw it. */
 export function SinceLastLook({ missed, now, timeZone }: { missed: Missed; now: string; timeZone: string }) {
   const [seen, setSeen] = useState(false);
+  const readerZone = useReaderZone();
   if (seen) return null;
   return (
     <Sheet
@@ -18,7 +20,7 @@ export function SinceLastLook({ missed, now, timeZone }: { missed: Missed; now: 
         <>
           Since you last looked,{' '}
           <time dateTime={missed.since} title={fullTime(missed.since, timeZone)} className="font-medium">
-            {clockOrDate(missed.since, now, timeZone)} {zoneName(missed.since, timeZone)}
+            {siteClock(missed.since, now, timeZone, readerZone)}
           </time>
         </>
       }
@@ -49,7 +51,7 @@ export function SinceLastLook({ missed, now, timeZone }: { missed: Missed; now: 
               title={fullTime(item.newestAt, item.timeZone)}
               className="shrink-0 text-sm text-ink-2"
             >
-              {clockOrDate(item.newestAt, now, item.timeZone)}
+              {siteClock(item.newestAt, now, item.timeZone, readerZone)}
             </time>
           </li>
         ))}

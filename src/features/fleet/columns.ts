@@ -19,7 +19,7 @@ export const fleetColumns = (
   { header: 'stuck', value: ({ site }) => site.counts.stuck },
   { header: 'not shutting down', value: ({ site }) => site.counts.notShuttingDown },
   { header: 'unconfirmed', value: ({ site }) => site.counts.unconfirmed },
-  { header: 'open', value: ({ site, causes }) => openAt(site, causes, now) },
+  { header: 'open', value: ({ site, causes }) => openAt(site, causes, now, null) },
   { header: 'in shutdown since (UTC)', value: ({ site }) => site.inShutdownSince },
   {
     header: 'performance ratio 30 d (%)',

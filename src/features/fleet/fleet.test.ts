@@ -79,7 +79,7 @@ describe("the fleet's finding", () => {
       'One string at Coopers Wharf Gallery did not shut down',
     );
     expect(needOf(gallery, [whole])).toBe('not_shutting_down');
-    expect(openAt(gallery, [whole], NOW)).toBe('1 string did not shut down');
+    expect(openAt(gallery, [whole], NOW, 'UTC')).toBe('1 string did not shut down');
     expect(fleetFinding([gallery], []).sentence).toContain('60 tell nothing themselves');
   });
 
@@ -126,16 +126,16 @@ describe('the lines of the fleet', () => {
   });
 
   it('say what is open, with the shared part behind it', () => {
-    expect(openAt(kestrel, [kestrelCause], NOW)).toBe('2 did not shut down');
-    expect(openAt(tannery, [tanneryCause], NOW)).toBe('2 stuck, one cause · 23 unheard');
-    expect(openAt(quayside, [quaysideCause], NOW)).toBe('20 stuck, one transmitter');
-    expect(openAt(millrace, [millraceCause], NOW)).toBe('48 silent, one gateway');
-    expect(openAt(lantern, [], NOW)).toBe('in shutdown since 13:21');
-    expect(openAt(clinic, [], NOW)).toBe('nothing');
+    expect(openAt(kestrel, [kestrelCause], NOW, 'UTC')).toBe('2 did not shut down');
+    expect(openAt(tannery, [tanneryCause], NOW, 'UTC')).toBe('2 stuck, one cause · 23 unheard');
+    expect(openAt(quayside, [quaysideCause], NOW, 'UTC')).toBe('20 stuck, one transmitter');
+    expect(openAt(millrace, [millraceCause], NOW, 'UTC')).toBe('48 silent, one gateway');
+    expect(openAt(lantern, [], NOW, 'UTC')).toBe('in shutdown since 13:21');
+    expect(openAt(clinic, [], NOW, 'UTC')).toBe('nothing');
     const far = site('Salt Pan Ferry Hall', {
       timeZone: 'Pacific/Auckland',
       inShutdownSince: '2026-06-01T13:21:00.000Z',
     });
-    expect(openAt(far, [], NOW)).toBe('in shutdown since 01:21');
+    expect(openAt(far, [], NOW, 'UTC')).toBe('in shutdown since 01:21 GMT+12');
   });
 });

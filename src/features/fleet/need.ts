@@ -1,6 +1,6 @@
 import { concerned } from '../../components/causes/places';
 import { number } from '../../drawings/numbers';
-import { clockOrDate } from '../../drawings/times';
+import { siteClock } from '../../components/ui/reader-zone';
 import type { CauseNow, SiteNow } from '../../schemas/api/now';
 
 /** What of a site asks for somebody, gravest first; what is lower in this list is worse. */
@@ -69,8 +69,16 @@ function behind(causes: readonly CauseNow[], verdict: CauseNow['verdict'], units
   return part && part.kind !== 'unit' ? `, one ${part.kind}` : ', one cause';
 }
 
-/** What is open at a site, for a table's cell: "23 unheard · 2 stuck", "nothing". Times in the site's zone. */
-export function openAt(site: SiteNow, causes: readonly CauseNow[], now: Date): string {
+/**
+ * What is open at a site, for a table's cell: "23 unheard · 2 stuck", "nothing". Times in the site's zone, which is named
+ * unless the reader's clock shows the same.
+ */
+export function openAt(
+  site: SiteNow,
+  causes: readonly CauseNow[],
+  now: Date,
+  readerZone: string | null,
+): string {
   const { counts } = site;
   const parts: string[] = [];
   const stringsLive = stringLevel(causes, 'not_shutting_down');
@@ -88,11 +96,11 @@ export function openAt(site: SiteNow, causes: readonly CauseNow[], now: Date): s
   if (!site.loggerConnected)
     parts.push(
       site.reportedAt
-        ? `no report since ${clockOrDate(site.reportedAt, now, site.timeZone)}`
+        ? `no report since ${siteClock(site.reportedAt, now, site.timeZone, readerZone)}`
         : 'has not reported yet',
     );
   if (site.inShutdownSince)
-    parts.push(`in shutdown since ${clockOrDate(site.inShutdownSince, now, site.timeZone)}`);
+    parts.push(`in shutdown since ${siteClock(site.inShutdownSince, now, site.timeZone, readerZone)}`);
   else
     for (const where of [...new Set(site.commands.map((c) => c.where))].slice(0, 2))
       parts.push(`${where} in shutdown`);

@@ -1,7 +1,8 @@
 import { Table, type Column } from '../../components/ui/Table';
 import { MixBar } from '../../drawings/MixBar';
 import { number } from '../../drawings/numbers';
-import { clockOrDate, fullTime, zoneName } from '../../drawings/times';
+import { siteClock, useReaderZone } from '../../components/ui/reader-zone';
+import { fullTime } from '../../drawings/times';
 import type { CommandNow } from '../../schemas/api/now';
 import { paths } from '../../schemas/paths';
 import type { Held } from './groups';
@@ -18,6 +19,7 @@ const confirmed = ({ site: { counts } }: Held): number => Math.max(0, counts.shu
 
 /** Sites with something other than a release in force: where, since when, by whom, and how many units say so. */
 export function HeldSites({ caption, held, now }: { caption: string; held: readonly Held[]; now: string }) {
+  const readerZone = useReaderZone();
   const columns: Column<Held>[] = [
     {
       key: 'site',
@@ -40,7 +42,7 @@ export function HeldSites({ caption, held, now }: { caption: string; held: reado
             <li key={`${c.whereKind} ${c.where}`}>
               {c.where}: {IN_FORCE[c.inForce].toLowerCase()} since{' '}
               <time dateTime={c.since} title={fullTime(c.since, site.timeZone)}>
-                {clockOrDate(c.since, now, site.timeZone)} {zoneName(c.since, site.timeZone)}
+                {siteClock(c.since, now, site.timeZone, readerZone)}
               </time>
               {c.by && <span className="text-ink-2">, {c.by}</span>}
             </li>

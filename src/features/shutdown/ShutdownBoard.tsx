@@ -78,22 +78,21 @@ export function ShutdownBoard({ initial, view: initialView, timeZone }: Props) {
           , {counted(causes.length, 'cause')} · oldest first
         </p>
       </div>
-      <div className="grid items-start gap-4 lg:grid-cols-2">
+      <div className="space-y-4">
         {causes.map((cause) => (
-          <div key={cause.key} className="min-w-0">
-            <CauseSheet
-              cause={cause}
-              timeZone={zoneOf(cause.siteId)}
-              now={clock}
-              contact={now.contacts.find((c) => c.siteId === cause.siteId)}
-              taken={now.acknowledgements.find((a) => a.key === cause.key)}
-              onTaken={(reply) =>
-                client.setQueryData<ShutdownNow>(shutdownKey, (old) => withAcknowledgement(old ?? now, reply))
-              }
-            >
-              <UnitsTable cause={cause} timeZone={zoneOf(cause.siteId)} now={clock} />
-            </CauseSheet>
-          </div>
+          <CauseSheet
+            key={cause.key}
+            cause={cause}
+            timeZone={zoneOf(cause.siteId)}
+            now={clock}
+            contact={now.contacts.find((c) => c.siteId === cause.siteId)}
+            taken={now.acknowledgements.find((a) => a.key === cause.key)}
+            onTaken={(reply) =>
+              client.setQueryData<ShutdownNow>(shutdownKey, (old) => withAcknowledgement(old ?? now, reply))
+            }
+          >
+            <UnitsTable cause={cause} timeZone={zoneOf(cause.siteId)} now={clock} />
+          </CauseSheet>
         ))}
       </div>
     </section>

@@ -70,11 +70,15 @@ export const eventsQuery = (site: string, kind: KindWanted, initial: EventsPage 
 
 export type EventsRead = InfiniteData<EventsPage, string | null>;
 
-/** The events read so far with what /live brought, newest first; one that is there already stays where it is. */
+/**
+ * The events read so far with what /live brought, newest first. One that is there already stays where it is; one older
+ * than what has been read comes with its own page.
+ */
 export function withEvents(read: EventsRead, news: readonly EventItem[], kind: KindWanted): EventsRead {
-  const known = new Set(read.pages.flatMap((p) => p.events.map((e) => e.id)));
-  const fresh = news.filter((e) => !known.has(e.id) && (kind === 'all' || e.kind === kind));
   const first = read.pages[0];
+  const known = new Set(read.pages.flatMap((p) => p.events.map((e) => e.id)));
+  const oldest = first?.before ? (first.events.at(-1)?.at ?? '') : '';
+  const fresh = news.filter((e) => !known.has(e.id) && (kind === 'all' || e.kind === kind) && e.at >= oldest);
   if (fresh.length === 0 || !first) return read;
   const events = [...fresh, ...first.events].sort(
     (a, b) => b.at.localeCompare(a.at) || Number(b.id) - Number(a.id),

@@ -34,6 +34,9 @@ export const eventsPage = z.object({
 });
 export type EventsPage = z.infer<typeof eventsPage>;
 
+/** Which events a site's page shows, as it stands in the address. */
+export const eventsView = z.object({ kind: z.enum(['all', ...EVENT_KINDS]).catch('all') });
+
 export const eventsQuery = z.strictObject({
   kind: z.enum(EVENT_KINDS).optional(),
   before: z

@@ -1,0 +1,120 @@
+import { useInfiniteQuery } from '@tanstack/react-query';
+import { useState } from 'react';
+import { eventInWords, KINDS } from '../../components/events/words';
+import { Button } from '../../components/ui/Button';
+import { Notice } from '../../components/ui/Notice';
+import { Sheet } from '../../components/ui/Sheet';
+import { SiteTime } from '../../components/ui/Time';
+import { duration } from '../../drawings/times';
+import { queryClient } from '../../lib/query-client';
+import type { EventItem } from '../../schemas/api/now';
+import type { EventsPage } from '../../schemas/api/site';
+import { paths } from '../../schemas/paths';
+import { eventsQuery, type KindWanted } from './query';
+
+/** Recorded this much later than it happened, an event was replayed. */
+const LATE_FROM_S = 300;
+
+function Line({
+  event,
+  now,
+  timeZone,
+  zone,
+}: {
+  event: EventItem;
+  now: string;
+  timeZone: string;
+  zone: boolean;
+}) {
+  const lateS = (Date.parse(event.recordedAt) - Date.parse(event.at)) / 1000;
+  return (
+    <li className="grid grid-cols-[auto_1fr] gap-x-4 border-b border-rule-faint py-2 last:border-b-0 sm:grid-cols-[150px_1fr]">
+      <span className="text-sm text-ink-2">
+        <SiteTime at={event.at} now={now} timeZone={timeZone} zone={zone} />
+      </span>
+      <span>
+        {event.stringId && event.stringName && (
+          <>
+            <a href={paths.string(event.siteId, event.stringId)} className="link font-semibold">
+              {event.stringName}
+            </a>
+            :{' '}
+          </>
+        )}
+        {eventInWords(event)}
+        {lateS > LATE_FROM_S && (
+          <span className="text-sm text-ink-2"> (reported {duration(lateS)} later)</span>
+        )}
+      </span>
+    </li>
+  );
+}
+
+interface Props {
+  site: string;
+  initial: EventsPage;
+  now: string;
+  timeZone: string;
+  zone: boolean;
+  kind: KindWanted;
+  onKind: (kind: KindWanted) => void;
+}
+
+/** What happened, newest first; one kind or all; older ones on demand. */
+export function EventsSheet({ site, initial, now, timeZone, zone, kind, onKind }: Props) {
+  const [first] = useState(kind);
+  const { data, error, fetchNextPage, hasNextPage, isFetching, refetch } = useInfiniteQuery(
+    eventsQuery(site, kind, kind === first ? initial : undefined),
+    queryClient(),
+  );
+  const events = data?.pages.flatMap((p) => p.events) ?? [];
+  return (
+    <Sheet
+      id="events"
+      title="Events"
+      aside={
+        <label className="no-print inline-flex items-center gap-2">
+          Kind
+          <select
+            value={kind}
+            onChange={(event) => onKind(event.target.value as KindWanted)}
+            className="target rounded border border-rule bg-sheet px-2 text-ink"
+          >
+            <option value="all">All</option>
+            {KINDS.map((k) => (
+              <option key={k.value} value={k.value}>
+                {k.label}
+              </option>
+            ))}
+          </select>
+        </label>
+      }
+    >
+      {error && (
+        <Notice
+          kind="failed"
+          title="Events could not be read"
+          action={<Button onClick={() => void refetch()}>Try again</Button>}
+        >
+          {error.message}
+        </Notice>
+      )}
+      {!error && !isFetching && events.length === 0 && (
+        <Notice
+          kind="empty"
+          title={kind === 'all' ? 'Nothing has happened yet' : 'Nothing of this kind has happened'}
+        />
+      )}
+      <ol aria-label="Events, newest first">
+        {events.map((event) => (
+          <Line key={event.id} event={event} now={now} timeZone={timeZone} zone={zone} />
+        ))}
+      </ol>
+      {hasNextPage && (
+        <Button className="no-print mt-3" disabled={isFetching} onClick={() => void fetchNextPage()}>
+          {isFetching ? 'Reading older ones …' : 'Older ones'}
+        </Button>
+      )}
+    </Sheet>
+  );
+}

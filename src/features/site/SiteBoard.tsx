@@ -1,0 +1,147 @@
+import { useQuery } from '@tanstack/react-query';
+import { useMemo } from 'react';
+import { CauseSheet } from '../../components/causes/CauseSheet';
+import { byGravity } from '../../components/causes/words';
+import { Button } from '../../components/ui/Button';
+import { Caution } from '../../components/ui/Caution';
+import { Heading } from '../../components/ui/Heading';
+import { LiveMark } from '../../components/ui/Live';
+import { Notice } from '../../components/ui/Notice';
+import { useNow } from '../../components/ui/Time';
+import { clocksDiffer, useReaderZone } from '../../components/ui/reader-zone';
+import { useLive } from '../../lib/live-hook';
+import { queryClient } from '../../lib/query-client';
+import { useViewInUrl } from '../../lib/view-in-url';
+import type { EventsPage, SitePage } from '../../schemas/api/site';
+import { paths } from '../../schemas/paths';
+import { EventsSheet } from './EventsSheet';
+import { InvertersSheet } from './InvertersSheet';
+import { NowSheet } from './NowSheet';
+import { RadioSheet } from './RadioSheet';
+import { StringsSheet } from './StringsSheet';
+import { ZonesSheet } from './ZonesSheet';
+import { siteFinding } from './finding';
+import {
+  asksForReading,
+  changedSite,
+  eventsKey,
+  siteKey,
+  siteQuery,
+  withAcknowledgement,
+  withEvents,
+  type EventsRead,
+  type KindWanted,
+} from './query';
+
+interface Props {
+  initial: SitePage;
+  events: EventsPage;
+  kind: KindWanted;
+}
+const DEFAULTS: { kind: KindWanted } = { kind: 'all' };
+
+export function SiteBoard({ initial, events, kind: initialKind }: Props) {
+  const client = queryClient();
+  const { id, timeZone } = initial.site;
+  const { data: page, error, refetch } = useQuery(siteQuery(initial), client);
+  const start = useMemo(() => ({ kind: initialKind }), [initialKind]);
+  const [{ kind }, setView] = useViewInUrl<{ kind: KindWanted }>(start, DEFAULTS);
+  const status = useLive(`site:${id}`, (change) => {
+    client.setQueryData<SitePage>(siteKey(id), (old) =>
+      changedSite(old ?? initial, change, new Date().toISOString()),
+    );
+    const news = change.events;
+    if (news)
+      client.setQueryData<EventsRead>(eventsKey(id, kind), (read) =>
+        read ? withEvents(read, news, kind) : read,
+      );
+    if (asksForReading(change)) void client.invalidateQueries({ queryKey: siteKey(id), exact: true });
+  });
+  const clock = useNow(initial.at);
+  const now = clock.toISOString();
+  const zone = clocksDiffer(clock, timeZone, useReaderZone());
+  const finding = siteFinding(page.site, page.causes, clock);
+  const causes = [...page.causes].sort(byGravity);
+
+  return (
+    <>
+      <Heading
+        crumbs={[
+          { label: 'Fleet', href: paths.fleet() },
+          { label: page.site.name },
+          ...(page.site.place ? [{ label: page.site.place }] : []),
+        ]}
+        finding={finding.heading}
+        sentence={finding.sentence}
+        actions={
+          <LiveMark
+            lostSince={!status.live && status.since ? status.since.toISOString() : null}
+            timeZone={timeZone}
+          />
+        }
+      />
+      <p className="sr-only" role="status">
+        {finding.heading}
+      </p>
+      {error && (
+        <div className="mb-6">
+          <Notice
+            kind="failed"
+            title="The site could not be read anew"
+            action={<Button onClick={() => void refetch()}>Try again</Button>}
+          >
+            {error.message} What is shown may be old.
+          </Notice>
+        </div>
+      )}
+      {causes.length > 0 && (
+        <section aria-labelledby="causes" className="mb-6">
+          <h2 id="causes" className="mb-2.5 text-[15px] leading-5 tracking-[-0.01em]">
+            Causes to act on
+          </h2>
+          <div className="grid items-stretch gap-4 md:grid-cols-2 xl:grid-cols-3">
+            {causes.map((cause) => (
+              <CauseSheet
+                key={cause.key}
+                ofThisSite
+                cause={cause}
+                timeZone={timeZone}
+                now={now}
+                contact={page.contact}
+                taken={page.acknowledgements.find((a) => a.key === cause.key)}
+                onTaken={(reply) =>
+                  client.setQueryData<SitePage>(siteKey(id), (old) => withAcknowledgement(old ?? page, reply))
+                }
+              />
+            ))}
+          </div>
+        </section>
+      )}
+      <div className="mb-6">
+        <Caution strong="Strings stay dangerous in light.">
+          Shutdown is not isolation: each module and its leads to its unit stay at module voltage. Never open
+          a connector under load. Isolate, lock out, prove dead with a rated meter; licensed or qualified
+          people, local code first.
+        </Caution>
+      </div>
+      <div className="space-y-6">
+        <NowSheet page={page} now={now} zone={zone} />
+        <ZonesSheet zones={page.zones} now={now} timeZone={timeZone} zone={zone} />
+        <StringsSheet site={id} strings={page.strings} />
+        <InvertersSheet inverters={page.inverters} now={now} timeZone={timeZone} zone={zone} />
+        <div className="grid items-start gap-6 xl:grid-cols-2">
+          <EventsSheet
+            site={id}
+            initial={events}
+            now={now}
+            timeZone={timeZone}
+            zone={zone}
+            kind={kind}
+            onKind={(wanted) => setView({ kind: wanted })}
+          />
+          <RadioSheet page={page} now={now} zone={zone} />
+        </div>
+      </div>
+    </>
+  );
+}

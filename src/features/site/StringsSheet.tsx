@@ -1,0 +1,210 @@
+import { useMemo, useState } from 'react';
+import { StateTag } from '../../components/states/StateTag';
+import { Notice } from '../../components/ui/Notice';
+import { Sheet } from '../../components/ui/Sheet';
+import { Table, type Column } from '../../components/ui/Table';
+import { Tag } from '../../components/ui/Tag';
+import { Comb } from '../../drawings/Comb';
+import { amperes, counted, decibelMilliwatts, number, power, volts } from '../../drawings/numbers';
+import type { StringNow } from '../../schemas/api/now';
+import { paths } from '../../schemas/paths';
+import { hearingOf, sortedStrings, type StringSort } from './tally';
+
+/** What is open on a string, in tags; none: nothing is. */
+function Open({ string }: { string: StringNow }) {
+  const { counts, finding } = string;
+  return (
+    <span className="flex flex-wrap gap-1">
+      {counts.notShuttingDown > 0 && <StateTag state={null} verdict="not_shutting_down" />}
+      {finding?.kind === 'not_shutting_down' && (
+        <Tag tone="crimson" shape="◆" title={finding.words}>
+          Conductors stay live
+        </Tag>
+      )}
+      {counts.stuck > 0 && (
+        <Tag tone="rust" shape="▼">
+          {number(counts.stuck)} stuck
+        </Tag>
+      )}
+      {finding?.kind === 'stuck_positions_unknown' && (
+        <Tag tone="rust" shape="▼" title={finding.words}>
+          Stuck, positions unknown
+        </Tag>
+      )}
+      {finding?.kind === 'unexplained_voltage' && (
+        <Tag tone="plain" shape="?" title={finding.words}>
+          Voltage not explained
+        </Tag>
+      )}
+      {counts.unconfirmed > 0 && (
+        <Tag tone="slate" shape="?">
+          {number(counts.unconfirmed)} unconfirmed
+        </Tag>
+      )}
+    </span>
+  );
+}
+
+/** The comb once for a phone and once for a desk: the same string, as wide as there is room. */
+function Combs({ string }: { string: StringNow }) {
+  return (
+    <>
+      <div className="lg:hidden">
+        <Comb id={`narrow-${string.id}`} slots={string.slots} width={170} />
+      </div>
+      <div className="hidden lg:block">
+        <Comb id={`wide-${string.id}`} slots={string.slots} />
+      </div>
+    </>
+  );
+}
+
+function Heard({ string }: { string: StringNow }) {
+  if (string.kind === 'shutdown_only') return <span className="text-ink-2">tells nothing</span>;
+  const { heard, units } = hearingOf(string);
+  return (
+    <span className={heard < units ? 'font-semibold' : ''}>
+      {number(heard)} of {number(units)}
+    </span>
+  );
+}
+
+const columnsFor = (site: string): Column<StringNow>[] => [
+  {
+    key: 'name',
+    label: 'String',
+    sortable: true,
+    cell: (string) => (
+      <a
+        href={paths.string(site, string.id)}
+        className="target inline-flex min-w-[44px] items-center font-semibold hover:underline"
+      >
+        {string.name}
+      </a>
+    ),
+  },
+  {
+    key: 'need',
+    label: 'Units',
+    sortable: true,
+    cell: (string) => (
+      <div className="space-y-1">
+        <Combs string={string} />
+        <Open string={string} />
+      </div>
+    ),
+  },
+  {
+    key: 'voltage',
+    label: 'Voltage',
+    numeric: true,
+    sortable: true,
+    cell: (string) => (
+      <>
+        {volts(string.voltage)}
+        {string.expectedVoltage !== null && (
+          <span className="block text-xs text-ink-2" title={`expected by ${string.expectedFrom}`}>
+            {volts(string.expectedVoltage)} expected
+          </span>
+        )}
+      </>
+    ),
+  },
+  {
+    key: 'current',
+    label: 'Current',
+    numeric: true,
+    sortable: true,
+    from: 'md',
+    cell: (s) => amperes(s.current),
+  },
+  { key: 'power', label: 'Power', numeric: true, sortable: true, from: 'lg', cell: (s) => power(s.power) },
+  { key: 'heard', label: 'Heard', numeric: true, from: 'sm', cell: (string) => <Heard string={string} /> },
+  {
+    key: 'signal',
+    label: 'Weakest signal',
+    numeric: true,
+    sortable: true,
+    from: 'md',
+    cell: (string) => {
+      const { weakest } = hearingOf(string);
+      return weakest ? (
+        <>
+          {decibelMilliwatts(weakest.signal)}
+          <span className="block text-xs text-ink-2">position {weakest.position}</span>
+        </>
+      ) : (
+        '–'
+      );
+    },
+  },
+];
+
+/** Every string as a comb, with what its conductors carry and how it is heard. */
+export function StringsSheet({ site, strings }: { site: string; strings: readonly StringNow[] }) {
+  const [sorting, setSorting] = useState<{ key: StringSort; descending: boolean }>({
+    key: 'need',
+    descending: false,
+  });
+  const [wanted, setWanted] = useState('');
+  const columns = useMemo(() => columnsFor(site), [site]);
+  const shown = useMemo(() => {
+    const q = wanted.trim().toLowerCase();
+    const some = strings.filter(
+      (s) =>
+        q === '' ||
+        s.name.toLowerCase().startsWith(q) ||
+        s.slots.some((slot) => slot.serial?.toLowerCase().startsWith(q)),
+    );
+    return sortedStrings(some, sorting.key, sorting.descending);
+  }, [strings, wanted, sorting]);
+  return (
+    <Sheet
+      id="strings"
+      flush
+      title="Strings"
+      aside={
+        <>
+          {counted(shown.length, 'string')}
+          {shown.length < strings.length && ` of ${number(strings.length)}`}
+        </>
+      }
+    >
+      {strings.length > 8 && (
+        <input
+          type="search"
+          aria-label="Filter strings by name or serial"
+          placeholder="Filter by name or serial"
+          autoComplete="off"
+          value={wanted}
+          onChange={(event) => setWanted(event.target.value)}
+          className="target no-print mb-2 w-full rounded border border-rule bg-sheet px-2.5 text-[15px] placeholder:text-ink-3 sm:w-[220px]"
+        />
+      )}
+      <Table
+        caption="Strings with their units as a comb, voltage, current, power, units heard and weakest signal"
+        columns={columns}
+        rows={shown}
+        rowKey={(string) => string.id}
+        sorting={sorting}
+        onSort={({ key, descending }) =>
+          setSorting({
+            key: key as StringSort,
+            // figures from the largest first, names and needs from the first
+            descending:
+              key === sorting.key ? descending : key !== 'name' && key !== 'need' && key !== 'signal',
+          })
+        }
+        empty={
+          strings.length === 0 ? (
+            <Notice kind="empty" title="No string is entered for this site" />
+          ) : (
+            <Notice kind="empty" title="No string matches">
+              Another name or serial may.
+            </Notice>
+          )
+        }
+      />
+    </Sheet>
+  );
+}
