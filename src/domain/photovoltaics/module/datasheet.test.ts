@@ -120,6 +120,7 @@ describe('moduleFromDatasheet', () => {
     [{ betaVoc: -0.29 }, /betaVoc must be between -0.02 and 0 1\/K, but is -0.29/],
     [{ cellsInSeries: 60.5 }, /cellsInSeries must be a whole number/],
     [{ iscRef: Number.NaN }, /iscRef/],
+    [{ cellsInSeries: 300 }, /cellsInSeries 300 makes 0.14 V a cell/],
   ])('refuses %o', (change, named) => {
     expect(() => moduleFromDatasheet({ ...sheet, ...change })).toThrow(named);
     expect(() => moduleFromDatasheet({ ...sheet, ...change })).toThrow(RangeError);

@@ -35,6 +35,9 @@ export interface FittedModule {
 
 const KELVIN_REF = STC.temperatureCell + KELVIN;
 
+/** V of one cell at STC, wide enough for half-cut cells counted twice and for thin film; from experience. */
+const CELL_VOLTAGE = { min: 0.25, max: 1.5 } as const;
+
 /** Refuses a datasheet that no module can have, naming the value. */
 export function checkModuleType(type: ModuleType): void {
   positive('vocRef', type.vocRef, 1000, 'V');
@@ -52,6 +55,13 @@ export function checkModuleType(type: ModuleType): void {
   within('gammaPmp', type.gammaPmp, -0.02, 0.01, '1/K');
   wholeWithin('cellsInSeries', type.cellsInSeries, 1, 1000);
   wholeWithin('bypassGroups', type.bypassGroups, 1, 50);
+  const voltageOfCell = type.vocRef / type.cellsInSeries;
+  if (voltageOfCell < CELL_VOLTAGE.min || voltageOfCell > CELL_VOLTAGE.max) {
+    throw new RangeError(
+      `cellsInSeries ${type.cellsInSeries} makes ${voltageOfCell.toFixed(2)} V a cell of vocRef ${type.vocRef} V; ` +
+        `a cell gives ${CELL_VOLTAGE.min} to ${CELL_VOLTAGE.max} V (of half-cut cells count those in series)`,
+    );
+  }
 }
 
 /**

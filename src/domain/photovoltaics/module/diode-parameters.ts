@@ -61,7 +61,7 @@ export function checkReference(reference: DiodeReference): void {
   positive('photocurrentRef', reference.photocurrentRef, 1000, 'A');
   positive('saturationCurrentRef', reference.saturationCurrentRef, 1, 'A');
   positive('resistanceShuntRef', reference.resistanceShuntRef, 1e9, 'Ω');
-  within('resistanceSeries', reference.resistanceSeries, 0, 100, 'Ω');
+  within('resistanceSeries', reference.resistanceSeries, 0, 1e4, 'Ω');
 }
 
 /**
