@@ -21,6 +21,11 @@ const DOES: Record<CauseVerdict, [one: string, many: string]> = {
 };
 const does = (verdict: CauseVerdict, n: number): string => DOES[verdict][n === 1 ? 0 : 1];
 
+/** A part once by kind and name: names often begin with their kind ("Gateway 3, laundry"). */
+const named = (kind: string, name: string): string =>
+  name.trim().toLowerCase().startsWith(kind) ? name.trim() : `${kind} ${name.trim()}`;
+const first = (words: string): string => words.charAt(0).toUpperCase() + words.slice(1);
+
 /** How many units an item list speaks of: "k of n units" where only the string's voltage tells. */
 function subject(items: readonly Item[]): string {
   const [only] = items;
@@ -47,39 +52,41 @@ export function headlineFor(verdict: CauseVerdict, cause: Candidate, items: read
   const plain = `${subject(items)} ${does(verdict, singular(items))}`;
   switch (cause.mode) {
     case 'transmitter_lost':
-      return `Transmitter ${name} is not heard by ${n}`;
+      return `${first(named('transmitter', name))} is not heard by ${n}`;
     case 'weak_signal':
       return cause.part.kind === 'transmitter'
-        ? `Transmitter ${name} is too weak for ${n}`
+        ? `${first(named('transmitter', name))} is too weak for ${n}`
         : `The keep-alive is too weak for ${n} of ${name}`;
     case 'transmitter_on':
-      return `Transmitter ${name} seems to keep sending: ${n} ${does(verdict, total(items))}`;
+      return `${first(named('transmitter', name))} seems to keep sending: ${n} ${does(verdict, total(items))}`;
     case 'cross_talk':
-      return `${n} of ${listed(stringNames(items))} seem to hear transmitter ${name} and ${does(verdict, 2)}`;
+      return `${n} of ${listed(stringNames(items))} seem to hear ${named('transmitter', name)} and ${does(verdict, 2)}`;
     case 'gateway':
       return verdict === 'silent' || verdict === 'unconfirmed'
-        ? `Gateway ${name} has fallen silent, and ${n} with it`
-        : `${n} reached through gateway ${name} ${does(verdict, total(items))}`;
+        ? `${first(named('gateway', name))} has fallen silent, and ${n} with it`
+        : `${n} reached through ${named('gateway', name)} ${does(verdict, total(items))}`;
     case 'logger':
       return verdict === 'not_shutting_down'
-        ? `${n} of logger ${name} ${does(verdict, total(items))}`
-        : `Logger ${name} reports nothing of ${n}`;
+        ? `${n} of ${named('logger', name)} ${does(verdict, total(items))}`
+        : `${first(named('logger', name))} reports nothing of ${n}`;
     case 'string':
-      return items.length === 1 ? plain : `All of string ${name}: ${n} ${does(verdict, total(items))}`;
+      return items.length === 1
+        ? plain
+        : `All of ${named('string', name)}: ${n} ${does(verdict, total(items))}`;
     case 'zone':
-      return `All of zone ${name}: ${n} ${does(verdict, total(items))}`;
+      return `All of ${named('zone', name)}: ${n} ${does(verdict, total(items))}`;
     case 'inverter':
-      return `All on inverter ${name}: ${n} ${does(verdict, total(items))}`;
+      return `All on ${named('inverter', name)}: ${n} ${does(verdict, total(items))}`;
     case 'input':
       return `${name} stays at voltage: ${count(items.length, 'string', 'strings')} may not shut down`;
     case 'site':
       return `The whole site: ${n} ${does(verdict, total(items))}`;
     case 'tells_nothing':
-      return `${n} in zone ${name} can not say whether they shut down`;
+      return `${n} in ${named('zone', name)} can not say whether they shut down`;
     case 'night':
-      return `It is too dark for ${n} in zone ${name} to say whether they shut down`;
+      return `It is too dark for ${n} in ${named('zone', name)} to say whether they shut down`;
     case 'not_heard_yet':
-      return `${n} in zone ${name} have not answered the roll call and may not obey the initiator`;
+      return `${n} in ${named('zone', name)} have not answered the roll call and may not obey the initiator`;
     case 'unit':
       return plain;
   }
@@ -119,7 +126,7 @@ export function evidenceWords(
   }
   if (cause.mode === 'cross_talk')
     sentences.push(
-      `Their own transmitters are off; ${cause.part.name}, which they should not hear, still sends.`,
+      `Their own transmitters are off; ${named('transmitter', cause.part.name)}, which they should not hear, still sends.`,
     );
   return sentences.filter(Boolean).join(' ');
 }
@@ -153,18 +160,21 @@ export function alternativeFor(verdict: CauseVerdict, rival: Candidate): string 
   const { name } = rival.part;
   const words: Record<Mode, string> = {
     unit: 'Each unit on its own',
-    string: `Something that all units of string ${name} share, its home run for one`,
-    weak_signal: `Noise on, or too long a run of, the conductors of ${rival.part.kind} ${name}`,
-    transmitter_lost: `Transmitter ${name} is off or defective`,
-    transmitter_on: `Transmitter ${name} keeps sending`,
-    cross_talk: `The units hear transmitter ${name}`,
-    gateway: `Gateway ${name}`,
-    logger: `Logger ${name} or its connection`,
+    string: `Something that all units of ${named('string', name)} share, its home run for one`,
+    weak_signal: `Noise on, or too long a run of, the conductors of ${named(rival.part.kind, name)}`,
+    transmitter_lost: `${first(named('transmitter', name))} is off or defective`,
+    transmitter_on: `${first(named('transmitter', name))} keeps sending`,
+    cross_talk: `The units hear ${named('transmitter', name)}`,
+    gateway: first(named('gateway', name)),
+    logger: `${first(named('logger', name))} or its connection`,
     input: `The wiring of ${name}`,
-    inverter: `Inverter ${name} or what it feeds`,
-    zone: verdict === 'stuck' ? `Zone ${name} is not released in truth` : `The command for zone ${name}`,
+    inverter: `${first(named('inverter', name))} or what it feeds`,
+    zone:
+      verdict === 'stuck'
+        ? `${first(named('zone', name))} is not released in truth`
+        : `The command for ${named('zone', name)}`,
     site: 'The power or the connection of the whole site',
-    tells_nothing: `Nothing in zone ${name} can report`,
+    tells_nothing: `Nothing in ${named('zone', name)} can report`,
     night: 'Too little light',
     not_heard_yet: 'The roll call is not complete',
   };
