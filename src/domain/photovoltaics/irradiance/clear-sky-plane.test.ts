@@ -14,22 +14,25 @@ const at = (latitude: number, longitude: number, surfaceTilt = 20, surfaceAzimut
 describe('a clear sky in a plane', () => {
   // Computed with pvlib-python 0.15.2 (BSD-3): Ineichen clear sky, Hay & Davies transposition; the source is in the file.
   // Ours takes the pressure of the altitude and the quick sun, hence 1 % and no case under 6 degrees.
-  it.each(chain.cases.filter((c) => (c.out.apparent_zenith ?? 90) < 84))('agrees with $id', ({ in: given, out }) => {
-    const found = clearSkyInPlane(
-      Date.parse(given.time_utc),
-      {
-        latitude: given.latitude,
-        longitude: given.longitude,
-        altitude: given.altitude_m,
-        surfaceTilt: given.surface_tilt,
-        surfaceAzimuth: given.surface_azimuth,
-        albedo: given.albedo,
-      },
-      given.linke_turbidity,
-    );
-    expect(Math.abs(found.poaGlobal / (out.poa_global ?? 0) - 1)).toBeLessThan(0.01);
-    expect(Math.abs(found.ghi / (out.ghi_clear ?? 0) - 1)).toBeLessThan(0.01);
-  });
+  it.each(chain.cases.filter((c) => (c.out.apparent_zenith ?? 90) < 84))(
+    'agrees with $id',
+    ({ in: given, out }) => {
+      const found = clearSkyInPlane(
+        Date.parse(given.time_utc),
+        {
+          latitude: given.latitude,
+          longitude: given.longitude,
+          altitude: given.altitude_m,
+          surfaceTilt: given.surface_tilt,
+          surfaceAzimuth: given.surface_azimuth,
+          albedo: given.albedo,
+        },
+        given.linke_turbidity,
+      );
+      expect(Math.abs(found.poaGlobal / (out.poa_global ?? 0) - 1)).toBeLessThan(0.01);
+      expect(Math.abs(found.ghi / (out.ghi_clear ?? 0) - 1)).toBeLessThan(0.01);
+    },
+  );
 
   it('is nothing while the sun is down, and never more than the sun itself', () => {
     fc.assert(
