@@ -112,7 +112,7 @@ export class Simulator {
   }
 
   /** Resolves when every connected logger's messages are acknowledged and the rest are connected; false after `withinMs`. */
-  async settled(withinMs = 10_000): Promise<boolean> {
+  async settled(withinMs = 25_000): Promise<boolean> {
     const untilMs = Date.now() + withinMs;
     const quiet = () =>
       this.runs.every((r) =>

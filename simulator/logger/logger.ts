@@ -176,8 +176,7 @@ export class Logger {
     if (rows.length > 0) this.connection.outbox.push({ type: 'heard', rows });
     if (this.traces.active) {
       this.traces.sample(atS);
-      // A growing trace is sent often while much happens, then less.
-      for (const message of this.traces.messages(atS, atS % 2 === 0)) this.connection.outbox.push(message);
+      for (const message of this.traces.messages(atS)) this.connection.outbox.push(message);
     }
     this.connection.flush();
   }

@@ -80,9 +80,16 @@ export class Traces {
     return Math.round((inverter?.held[k] ?? 0) * 10);
   }
 
-  /** The traces as far as they go, where `all` or where one has ended; ended ones are dropped. */
-  messages(atS: number, all: boolean): TraceMessage[] {
-    const due = this.running.filter((r) => r.voltages.length > 0 && (all || atS - r.startedS >= TRACE_S));
+  /** The traces that are due as far as they go: often while much happens, then less; ended ones are dropped. */
+  messages(atS: number): TraceMessage[] {
+    const stepS = this.running.length > 40 ? 4 : 2;
+    const due = this.running.filter((r) => {
+      const elapsed = atS - r.startedS;
+      return (
+        r.voltages.length > 0 &&
+        (elapsed <= 40 ? elapsed % stepS === 0 : elapsed % 20 === 0 || elapsed >= TRACE_S)
+      );
+    });
     this.running = this.running.filter((r) => atS - r.startedS < TRACE_S);
     return due.map((r) => ({
       type: 'trace',

@@ -48,6 +48,7 @@ export const MODULE_TYPES: ModuleType[] = [
 export const UNIT_TYPES: UnitType[] = [
   { ...UNIT_PRESETS.monitored, name: 'Reporting unit, both sides', measures: 'both' },
   { ...UNIT_PRESETS.monitored, name: 'Reporting unit, output side' },
+  { ...UNIT_PRESETS.monitored, name: 'Reporting unit that holds', onCommandLoss: 'holds' },
   {
     ...UNIT_PRESETS.monitored,
     name: 'Reporting unit on keep-alive',
@@ -59,9 +60,10 @@ export const UNIT_TYPES: UnitType[] = [
   { ...UNIT_PRESETS.optimizing, name: 'Optimizing unit' },
 ];
 
-export const [BOTH_SIDES, OUTPUT_SIDE, ON_KEEP_ALIVE, SHUTDOWN_ONLY, OPTIMIZING] = [
+export const [BOTH_SIDES, OUTPUT_SIDE, HOLDING, ON_KEEP_ALIVE, SHUTDOWN_ONLY, OPTIMIZING] = [
   'Reporting unit, both sides',
   'Reporting unit, output side',
+  'Reporting unit that holds',
   'Reporting unit on keep-alive',
   'Shutdown unit',
   'Optimizing unit',

@@ -1,5 +1,6 @@
 import {
   BOTH_SIDES,
+  HOLDING,
   MONO_430,
   MONO_450,
   ON_KEEP_ALIVE,
@@ -148,7 +149,7 @@ export const LOWFIELD_SITES: DemoSite[] = [
       contactName: 'Perpetua Lyle',
       contactPhone: '+00 555 0104',
       moduleType: MONO_430,
-      unitType: OUTPUT_SIDE,
+      unitType: HOLDING,
       planes: [plane('Blocks 1 to 3', 30, 190), plane('Laundry roof', 12, 120)],
       ...oneZone('Plant room, block 2'),
       gatewayNames: ['Gateway 1, block 1', 'Gateway 2, block 3', 'Gateway 3, laundry'],
