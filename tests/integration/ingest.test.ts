@@ -5,6 +5,7 @@ import type { SeededSite } from '../../seeds/plant/seeded';
 import { testDatabase, type TestDatabase } from '../support/database';
 import { SECRET, testFleet } from '../support/fleet';
 import { frameOf, nowS, openSockets, TestLogger, type Sockets } from '../support/ingest';
+import { noonEverywhere } from '../support/noon';
 
 let db: TestDatabase;
 let sockets: Sockets;
@@ -13,13 +14,10 @@ let serial: string;
 let token: string;
 let logger: TestLogger;
 
-/** Puts a site where the sun stands high at this moment. */
-const noonNow = () => 15 * (12 - (new Date().getUTCHours() + new Date().getUTCMinutes() / 60));
-
 beforeAll(async () => {
   db = await testDatabase();
   const fleet = await testFleet(db, ['Old Tannery Market Hall', 'Weirside Clinic', 'Netloft Terrace']);
-  await db.owner.query('update site set longitude = $1, latitude = 0', [noonNow()]);
+  await noonEverywhere(db.owner);
   site = fleet.site('Old Tannery Market Hall');
   serial = [...site.loggers.keys()][0] ?? '';
   token = loggerToken(SECRET, serial);

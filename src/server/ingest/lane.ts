@@ -20,6 +20,9 @@ const RETRY_MS = { first: 200, max: 3000 };
 const DAYS_FRESH_S = 60;
 const NO_PARTITION = '23514';
 
+/** Data that the database will never take (classes 22 and 23); whatever else it says, later may be different. */
+const isItsFault = (error: unknown): boolean => /^2[23]/.test(codeOf(error));
+
 const codeOf = (error: unknown): string =>
   error instanceof Error && 'code' in error && typeof error.code === 'string' ? error.code : '';
 
@@ -93,11 +96,9 @@ export class Lane {
           this.daysAtS = 0;
           continue;
         }
-        if (!isDatabaseAway(error) && codeOf(error) !== '57014') return this.writeOneByOne(batch);
-        log.warn(
-          { error: error instanceof Error ? error.message : String(error) },
-          'readings wait: the database is away',
-        );
+        if (isItsFault(error)) return this.writeOneByOne(batch);
+        const reason = error instanceof Error ? error.message : String(error);
+        log[isDatabaseAway(error) ? 'warn' : 'error']({ error: reason }, 'readings wait for the database');
       }
       this.hooks.away();
       await this.dropClient();
@@ -134,7 +135,7 @@ export class Lane {
         for (const key of ['sites', 'strings', 'contexts'] as const)
           for (const id of written[key]) all[key].add(id);
       } catch (error) {
-        if (isDatabaseAway(error)) return this.writeUntilDone(batch);
+        if (!isItsFault(error)) return this.writeUntilDone(batch);
         const reason = error instanceof Error ? error.message : String(error);
         log.error({ error }, 'the database refuses a reading');
         for (const item of [...batch.finished, ...this.queue])
