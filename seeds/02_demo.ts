@@ -8,11 +8,13 @@ export const DEMO_PASSWORD = 'roof-ladder-meter';
 
 /**
  * The demo fleet with its past. Does nothing in a database that already has an organisation, unless
- * WAKELINE_SEED_FRESH=1 asks to empty it first. WAKELINE_DEMO_SECRET must be the simulator's too.
+ * WAKELINE_SEED_FRESH=1 asks to empty it first. WAKELINE_DEMO_SECRET must be the simulator's too,
+ * and so must WAKELINE_DEMO_SINCE (epoch seconds for which the fleet is laid out; now where it is not given).
  */
 export async function seed(knex: Knex): Promise<void> {
   const secret = process.env.WAKELINE_DEMO_SECRET;
   const fresh = process.env.WAKELINE_SEED_FRESH === '1';
+  const since = Number(process.env.WAKELINE_DEMO_SINCE) || Math.floor(Date.now() / 60_000) * 60;
   const there = await knex('organisation').first<{ id: number } | undefined>('id');
   if (there && !fresh) return;
   if (!secret)
@@ -21,9 +23,9 @@ export async function seed(knex: Knex): Promise<void> {
     );
   await knex.transaction(async (tx) => {
     if (there) await clearFleet(tx);
-    const fleet = demoFleet(DEMO_SEED, Math.floor(Date.now() / 60_000) * 60);
+    const fleet = demoFleet(DEMO_SEED, since);
     const plant = await seedPlant(tx, fleet, { secret, password: DEMO_PASSWORD });
-    await seedHistory(tx, fleet, plant);
+    await seedHistory(tx, fleet, plant, (line) => console.log(line));
   });
   for (const table of ['string_frame', 'string_quarter', 'string_day', 'site_day', 'placement', 'heard'])
     await knex.raw(`analyze ${table}`);

@@ -156,13 +156,18 @@ export const isEmpty = (url) =>
   });
 
 /** Writes the demo. Seeds say what they do; their lines are shown. */
-export async function seed(url, demoSecret) {
+export async function seed(url, { demoSecret, demoSince }) {
   const result = await run(
     process.execPath,
     ['--import', 'tsx', 'node_modules/knex/bin/cli.js', 'seed:run'],
     {
       cwd: root,
-      env: { ...process.env, DATABASE_URL: url, WAKELINE_DEMO_SECRET: demoSecret },
+      env: {
+        ...process.env,
+        DATABASE_URL: url,
+        WAKELINE_DEMO_SECRET: demoSecret,
+        WAKELINE_DEMO_SINCE: String(demoSince),
+      },
       onLine: (line) => {
         if (line.trim() && !/^(Using |Working directory|Ran \d+ seed)/.test(line)) say(`  ${line.trim()}`);
       },

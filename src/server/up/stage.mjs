@@ -77,8 +77,9 @@ export async function prepareDemo(stage, { fresh = false } = {}) {
   if (await isEmpty(stage.url)) {
     say('writing the demo: sites, months of history, two days of minute readings');
     stage.state.seed = 'running';
+    stage.state.demoSince = Math.floor(Date.now() / 60_000) * 60; // the simulator lays out the same fleet
     stage.remember();
-    await seed(stage.url, stage.state.demoSecret);
+    await seed(stage.url, stage.state);
     stage.state.seed = 'done';
     stage.remember();
   } else {

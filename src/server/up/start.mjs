@@ -98,7 +98,7 @@ async function answers(url, died) {
 const SIMULATOR_TRIES = 5;
 
 /** The simulator runs along; one that falls is started again, so that the site in view stays. Resolves when that is given up. */
-function launchSimulator(env, { reach, simulatorPort, secret }, atEnd) {
+function launchSimulator(env, { reach, simulatorPort, stage }, atEnd) {
   let simulator;
   let ending = false;
   atEnd(() => {
@@ -115,7 +115,9 @@ function launchSimulator(env, { reach, simulatorPort, secret }, atEnd) {
           DATABASE_URL_APP: '',
           DATABASE_URL_INGEST: '',
           WAKELINE_INGEST_URL: `ws://${reach}/ingest/v1`,
-          WAKELINE_DEMO_SECRET: secret,
+          WAKELINE_DEMO_SECRET: stage.state.demoSecret,
+          WAKELINE_DEMO_SINCE: stage.state.demoSince ? String(stage.state.demoSince) : undefined,
+          WAKELINE_SIM_STATE: path.join(stage.home, 'simulator.json'),
           WAKELINE_URL: `http://${reach}/`,
           SIMULATOR_PORT: String(simulatorPort),
         },
@@ -207,8 +209,7 @@ async function bringUpDemo(args, atEnd, { prepare = () => Promise.resolve(), lau
   const siteEnded = endOf(site, 'The site');
   say(stage.hasDemo ? 'starting the site and the simulator' : 'starting the site');
   const parts = [siteEnded];
-  if (stage.hasDemo)
-    parts.push(launchSimulator(env, { reach, simulatorPort, secret: stage.state.demoSecret }, atEnd));
+  if (stage.hasDemo) parts.push(launchSimulator(env, { reach, simulatorPort, stage }, atEnd));
   if (await answers(`${address}sign-in`, siteEnded))
     welcome(address, stage.hasDemo ? simulatorPort : undefined, elapsedS());
   const { name, code, signal } = await Promise.race([...parts, watchDatabase(stage, atEnd)]);
