@@ -7,7 +7,8 @@ import { GET as csvRoute } from '../../src/pages/api/fleet.csv';
 import { POST as acknowledgeRoute } from '../../src/pages/api/sites/[site]/acknowledge';
 import { acknowledgeReply, fleetNow, type FleetNow } from '../../src/schemas/api/fleet';
 import { database } from '../../src/server/db/pools';
-import { asActor } from '../../src/server/db/transaction';
+import { asActor, asIngest } from '../../src/server/db/transaction';
+import { causesNow } from '../../src/server/services/causes';
 import { lookAtFleet, readFleet } from '../../src/server/services/fleet';
 import { testDatabase, type TestDatabase } from '../support/database';
 import { ask } from '../support/endpoint';
@@ -105,6 +106,13 @@ describe('the fleet', () => {
       LANTERN,
       CLINIC,
     ]);
+  });
+
+  it('explains the same to whoever serves every organisation and names the sites', async () => {
+    const ids = [KESTREL, QUAYSIDE, LANTERN, CLINIC].map((name) => fleet.site(name).id);
+    const told = await asIngest((tx) => causesNow(tx, NOW, ids));
+    expect(told).toEqual((await read(analyst)).causes);
+    expect(told.length).toBeGreaterThan(1);
   });
 
   it('shows nothing of another organisation, and nothing to a customer or to nobody', async () => {

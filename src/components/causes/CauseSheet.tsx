@@ -35,16 +35,21 @@ export function CauseTag({ verdict }: Pick<CauseNow, 'verdict'>) {
 }
 
 /** Strings as links while they are few, else in words. */
-function Where({ cause }: { cause: CauseNow }) {
+function Where({ cause, begins }: { cause: CauseNow; begins: boolean }) {
   const places = placesOf(cause.units);
-  if (places.length === 0 || places.length > 3) return <>{placesInWords(cause.units)}</>;
+  if (places.length === 0 || places.length > 3) {
+    const words = placesInWords(cause.units);
+    return <>{begins ? words.charAt(0).toUpperCase() + words.slice(1) : words}</>;
+  }
   return (
     <>
       {places.map((place, i) => (
         <span key={place.stringId}>
           {i > 0 && '; '}
-          <a href={paths.string(cause.siteId, place.stringId)}>string {place.stringName}</a>,{' '}
-          {positionsInWords(place.positions)}
+          <a href={paths.string(cause.siteId, place.stringId)}>
+            {begins && i === 0 ? 'String' : 'string'} {place.stringName}
+          </a>
+          , {positionsInWords(place.positions)}
         </span>
       ))}
     </>
@@ -83,7 +88,7 @@ export function CauseSheet({
               <a href={paths.site(cause.siteId)}>{cause.siteName}</a>,{' '}
             </>
           )}
-          <Where cause={cause} />. {cause.evidence}
+          <Where cause={cause} begins={ofThisSite} />. {cause.evidence}
           {live && <strong className="font-semibold text-ink"> {live}</strong>}
         </p>
         <p className="mt-2 text-sm text-ink-2">

@@ -34,12 +34,12 @@ interface Props {
 export function FleetBoard({ initial, view: initialView, missed, timeZone }: Props) {
   const client = queryClient();
   const { data: fleet, error, refetch } = useQuery(fleetQuery(initial), client);
-  const status = useLive('fleet', (change) => {
+  const status = useLive('fleet', (change, kind) => {
     client.setQueryData<FleetNow>(fleetKey, (old) =>
       changedFleet(old ?? initial, change, new Date().toISOString()),
     );
     // a cause at a site whose telephone number or acknowledgement is not here yet
-    if (change.causes) void client.invalidateQueries({ queryKey: fleetKey });
+    if (kind === 'delta' && change.causes) void client.invalidateQueries({ queryKey: fleetKey });
   });
   const [view, change] = useViewInUrl(initialView, FLEET_DEFAULTS);
   const now = useNow(initial.at);

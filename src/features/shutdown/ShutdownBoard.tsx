@@ -50,11 +50,11 @@ interface Props {
 export function ShutdownBoard({ initial, view: initialView, timeZone }: Props) {
   const client = queryClient();
   const { data: now, error, refetch } = useQuery(shutdownQuery(initial), client);
-  const status = useLive('fleet', (change) => {
+  const status = useLive('fleet', (change, kind) => {
     client.setQueryData<ShutdownNow>(shutdownKey, (old) =>
       changedShutdown(old ?? initial, change, new Date().toISOString()),
     );
-    if (change.causes) void client.invalidateQueries({ queryKey: shutdownKey });
+    if (kind === 'delta' && change.causes) void client.invalidateQueries({ queryKey: shutdownKey });
   });
   const [view, change] = useViewInUrl(initialView, SHUTDOWN_DEFAULTS);
   const clock = useNow(initial.at).toISOString();

@@ -46,7 +46,7 @@ export function SiteBoard({ initial, events, kind: initialKind }: Props) {
   const { data: page, error, refetch } = useQuery(siteQuery(initial), client);
   const start = useMemo(() => ({ kind: initialKind }), [initialKind]);
   const [{ kind }, setView] = useViewInUrl<{ kind: KindWanted }>(start, DEFAULTS);
-  const status = useLive(`site:${id}`, (change) => {
+  const status = useLive(`site:${id}`, (change, how) => {
     client.setQueryData<SitePage>(siteKey(id), (old) =>
       changedSite(old ?? initial, change, new Date().toISOString()),
     );
@@ -55,7 +55,8 @@ export function SiteBoard({ initial, events, kind: initialKind }: Props) {
       client.setQueryData<EventsRead>(eventsKey(id, kind), (read) =>
         read ? withEvents(read, news, kind) : read,
       );
-    if (asksForReading(change)) void client.invalidateQueries({ queryKey: siteKey(id), exact: true });
+    if (how === 'delta' && asksForReading(change))
+      void client.invalidateQueries({ queryKey: siteKey(id), exact: true });
   });
   const clock = useNow(initial.at);
   const now = clock.toISOString();
@@ -68,8 +69,7 @@ export function SiteBoard({ initial, events, kind: initialKind }: Props) {
       <Heading
         crumbs={[
           { label: 'Fleet', href: paths.fleet() },
-          { label: page.site.name },
-          ...(page.site.place ? [{ label: page.site.place }] : []),
+          { label: page.site.place ? `${page.site.name}, ${page.site.place}` : page.site.name },
         ]}
         finding={finding.heading}
         sentence={finding.sentence}

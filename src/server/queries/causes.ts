@@ -4,36 +4,43 @@ import type { FindingEvidence } from '../../domain/verdicts/memory';
 import type { Tx } from '../db/transaction';
 import { SITE_VISIBLE } from './visible-site';
 
-/** A site with all that the search for causes looks at, as the database has it. Times are epoch seconds. */
+export interface CauseStringRow {
+  id: number;
+  siteId: number;
+  ref: string;
+  name: string;
+  kind: UnitKind;
+  releasedBy: 'keep_alive' | 'logger';
+  zone: string;
+  transmitters: string[];
+  loggerId: number | null;
+  logger: string | null;
+  inverter: string;
+  input: number;
+  /** Slots that hold a unit, in order. */
+  positions: number[];
+  serials: string[];
+  /** By position − 1, as the judgement and the newest frame have them; null: none yet. Times are epoch seconds. */
+  state: (number | null)[] | null;
+  verdict: (number | null)[] | null;
+  since: (number | null)[] | null;
+  seen: (number | null)[] | null;
+  via: (number | null)[] | null;
+  finding: StringFinding | null;
+  findingSince: Date | null;
+  evidence: FindingEvidence | null;
+}
+
+/** A site with all that the search for causes looks at, as the database has it. */
 export interface CauseSiteRow {
+  id: number;
   ref: string;
   name: string;
   reportIntervalS: number;
-  strings: {
-    ref: string;
-    name: string;
-    kind: UnitKind;
-    releasedBy: 'keep_alive' | 'logger';
-    zone: string;
-    transmitters: string[];
-    logger: string | null;
-    inverter: string;
-    input: number;
-    units: { position: number; serial: string }[];
-    /** By position − 1, as the judgement and the newest frame have them; null: none yet. */
-    state: (number | null)[] | null;
-    verdict: (number | null)[] | null;
-    since: (number | null)[] | null;
-    seen: (number | null)[] | null;
-    via: (number | null)[] | null;
-    gateways: Record<string, string> | null; // of its logger, by number
-    finding: StringFinding | null;
-    findingSinceS: number | null;
-    evidence: FindingEvidence | null;
-  }[];
+  strings: CauseStringRow[];
   zones: { name: string; inForce: InForce | null }[];
   transmitters: { name: string; zone: string; inForce: InForce | null }[];
-  gateways: { name: string; lastHeardS: number | null }[];
+  gateways: { loggerId: number; number: number; name: string; lastHeardS: number | null }[];
   loggers: { name: string; lastSpokeS: number | null; connected: boolean }[];
   inputs: { inverter: string; number: number; current: number | null }[]; // cA
   /** Wh that a unit makes on a middling day of the last week; null: not known. */
@@ -41,67 +48,44 @@ export interface CauseSiteRow {
 }
 
 /**
- * Every visible site (or those of the given numbers) at which any unit or string is not as it should be, in one
- * statement. Whole sites come, since an explanation rests as much on the units that are well.
+ * Every site that the actor sees, or those of the given numbers (then whoever calls has checked them), at which any unit
+ * or string is not as it should be. Whole sites come, since an explanation rests as much on the units that are well.
+ * Three plain statements at most, joined here: one large one went astray whenever statistics were old.
  */
 export async function causeSites(tx: Tx, siteIds?: readonly number[]): Promise<CauseSiteRow[]> {
-  const { rows } = await tx.raw<{ rows: CauseSiteRow[] }>(
+  const sites = await concernedSites(tx, siteIds);
+  if (sites.length === 0) return [];
+  const ids = sites.map((s) => s.id);
+  const units = await unitsOf(tx, ids);
+  const strings = new Map<number, CauseStringRow[]>(ids.map((id) => [id, []]));
+  for (const row of await stringsOf(tx, ids))
+    strings.get(row.siteId)?.push({ ...row, ...(units.get(row.id) ?? { positions: [], serials: [] }) });
+  return sites.map((site) => ({ ...site, strings: strings.get(site.id) ?? [] }));
+}
+
+async function concernedSites(
+  tx: Tx,
+  siteIds: readonly number[] | undefined,
+): Promise<Omit<CauseSiteRow, 'strings'>[]> {
+  const { rows } = await tx.raw<{ rows: Omit<CauseSiteRow, 'strings'>[] }>(
     `with concerned as materialized (
-       select site.* from site
-       where ${SITE_VISIBLE} ${siteIds ? 'and site.id = any (:siteIds)' : ''}
+       select site.id, site.ref, site.name, site.report_interval_s from site
+       where ${siteIds ? 'site.id = any (:siteIds)' : SITE_VISIBLE}
          and exists (select from string_judgement j where j.site_id = site.id
                      and (j.stuck > 0 or j.not_shutting_down > 0 or j.unconfirmed > 0 or j.silent > 0
-                          or j.finding is not null))),
-     said as (
-       select distinct on (c.site_id, c.zone_id, c.transmitter_id) c.site_id, c.zone_id, c.transmitter_id, c.in_force
-       from command c where c.site_id in (select id from concerned)
-       order by c.site_id, c.zone_id, c.transmitter_id, c.since desc),
-     served as materialized (
-       select ts.string_id, json_agg(t.name order by t.name) as names
-       from transmitter_string ts join transmitter t on t.id = ts.transmitter_id
-       where ts.site_id in (select id from concerned) group by ts.string_id),
-     radio as materialized (
-       select logger_id, json_object_agg(number, name) as names from gateway
-       where site_id in (select id from concerned) group by logger_id),
-     wired as (
-       select s.site_id, json_agg(json_build_object(
-                'ref', s.ref, 'name', s.name, 'kind', s.kind, 'releasedBy', ut.released_by, 'zone', z.name,
-                'transmitters', coalesce(served.names, '[]'), 'logger', l.serial, 'inverter', inv.name,
-                'input', i.number, 'units', coalesce(placed.units, '[]'),
-                'state', j.state, 'verdict', j.verdict, 'since', j.since, 'seen', st.seen, 'via', st.via,
-                'gateways', radio.names, 'finding', j.finding,
-                'findingSinceS', extract(epoch from j.finding_since)::int8,
-                'evidence', j.evidence -> 'finding') order by s.id) as strings
-       from string s
-       join unit_type ut on ut.id = s.unit_type_id
-       join zone z on z.id = s.zone_id
-       join input i on i.id = s.input_id
-       join inverter inv on inv.id = i.inverter_id
-       left join logger l on l.id = s.logger_id
-       left join radio on radio.logger_id = s.logger_id
-       left join served on served.string_id = s.id
-       left join lateral (
-         select json_agg(json_build_object('position', sl.position, 'serial', u.serial) order by sl.position) as units
-         from slot sl
-         join placement p on p.slot_id = sl.id and p.placed_to is null
-         join unit u on u.id = p.unit_id
-         where sl.string_id = s.id) placed on true
-       left join string_state st on st.string_id = s.id
-       left join string_judgement j on j.string_id = s.id
-       where s.site_id in (select id from concerned)
-       group by s.site_id),
-     made as (
-       select d.site_id, percentile_cont(0.5) within group (order by d.energy::float8 / s.slots) as wh
-       from string_day d join string s on s.id = d.string_id
-       where d.site_id in (select id from concerned) and d.day >= current_date - 8 and d.energy > 0
-       group by d.site_id)
-     select c.ref, c.name, c.report_interval_s as "reportIntervalS", wired.strings, made.wh as "unitDayWh",
-            coalesce((select json_agg(json_build_object('name', z.name, 'inForce', said.in_force))
-                      from zone z left join said on said.zone_id = z.id where z.site_id = c.id), '[]') as zones,
-            coalesce((select json_agg(json_build_object('name', t.name, 'zone', z.name, 'inForce', said.in_force))
-                      from transmitter t join zone z on z.id = t.zone_id
-                      left join said on said.transmitter_id = t.id where t.site_id = c.id), '[]') as transmitters,
-            coalesce((select json_agg(json_build_object('name', g.name,
+                          or j.finding is not null)))
+     select c.id, c.ref, c.name, c.report_interval_s as "reportIntervalS",
+            (select percentile_cont(0.5) within group (order by d.energy::float8 / s.slots)
+             from string_day d join string s on s.id = d.string_id
+             where d.site_id = c.id and d.day >= current_date - 8 and d.energy > 0) as "unitDayWh",
+            coalesce((select json_agg(json_build_object('name', z.name, 'inForce',
+                        (select in_force from command where site_id = c.id and zone_id = z.id order by since desc limit 1)))
+                      from zone z where z.site_id = c.id), '[]') as zones,
+            coalesce((select json_agg(json_build_object('name', t.name, 'zone', z.name, 'inForce',
+                        (select in_force from command where site_id = c.id and transmitter_id = t.id
+                         order by since desc limit 1)))
+                      from transmitter t join zone z on z.id = t.zone_id where t.site_id = c.id), '[]') as transmitters,
+            coalesce((select json_agg(json_build_object('loggerId', g.logger_id, 'number', g.number, 'name', g.name,
                         'lastHeardS', extract(epoch from g.last_heard_at)::int8))
                       from gateway g where g.site_id = c.id), '[]') as gateways,
             coalesce((select json_agg(json_build_object('name', l.serial, 'connected', l.connected_at is not null,
@@ -110,10 +94,52 @@ export async function causeSites(tx: Tx, siteIds?: readonly number[]): Promise<C
             coalesce((select json_agg(json_build_object('inverter', inv.name, 'number', i.number, 'current', ist.current))
                       from input i join inverter inv on inv.id = i.inverter_id
                       left join input_state ist on ist.input_id = i.id where i.site_id = c.id), '[]') as inputs
-     from concerned c join wired on wired.site_id = c.id
-     left join made on made.site_id = c.id
+     from concerned c
      order by c.name`,
     siteIds ? { siteIds: [...siteIds] } : {},
   );
   return rows;
+}
+
+async function stringsOf(
+  tx: Tx,
+  siteIds: readonly number[],
+): Promise<Omit<CauseStringRow, 'positions' | 'serials'>[]> {
+  const { rows } = await tx.raw<{ rows: Omit<CauseStringRow, 'positions' | 'serials'>[] }>(
+    `select s.id, s.site_id as "siteId", s.ref, s.name, s.kind, ut.released_by as "releasedBy", z.name as zone,
+            coalesce((select array_agg(t.name order by t.name) from transmitter_string ts
+                      join transmitter t on t.id = ts.transmitter_id where ts.string_id = s.id), '{}') as transmitters,
+            s.logger_id as "loggerId", l.serial as logger, inv.name as inverter, i.number as input,
+            j.state, j.verdict, j.since, st.seen, st.via, j.finding, j.finding_since as "findingSince",
+            j.evidence -> 'finding' as evidence
+     from string s
+     join unit_type ut on ut.id = s.unit_type_id
+     join zone z on z.id = s.zone_id
+     join input i on i.id = s.input_id
+     join inverter inv on inv.id = i.inverter_id
+     left join logger l on l.id = s.logger_id
+     left join string_state st on st.string_id = s.id
+     left join string_judgement j on j.string_id = s.id
+     where s.site_id = any (:siteIds)
+     order by s.id`,
+    { siteIds: [...siteIds] },
+  );
+  return rows;
+}
+
+async function unitsOf(
+  tx: Tx,
+  siteIds: readonly number[],
+): Promise<Map<number, { positions: number[]; serials: string[] }>> {
+  const { rows } = await tx.raw<{ rows: { stringId: number; positions: number[]; serials: string[] }[] }>(
+    `select sl.string_id as "stringId", array_agg(sl.position order by sl.position) as positions,
+            array_agg(u.serial order by sl.position) as serials
+     from slot sl
+     join placement p on p.slot_id = sl.id and p.placed_to is null
+     join unit u on u.id = p.unit_id
+     where sl.site_id = any (:siteIds)
+     group by sl.string_id`,
+    { siteIds: [...siteIds] },
+  );
+  return new Map(rows.map(({ stringId, ...units }) => [stringId, units]));
 }

@@ -4,29 +4,30 @@ import { UNIT_STATES, VERDICTS } from '../../domain/verdicts/codes';
 import { countAtStart, listed } from '../../drawings/numbers';
 import type { CauseNow } from '../../schemas/api/now';
 import type { Tx } from '../db/transaction';
-import { causeSites, type CauseSiteRow } from '../queries/causes';
+import { causeSites, type CauseSiteRow, type CauseStringRow } from '../queries/causes';
 
 const iso = (atS: number): string => new Date(atS * 1000).toISOString();
 
-function slotsOf(string: CauseSiteRow['strings'][number]): SlotCondition[] {
-  return string.units.map(({ position, serial }) => {
+function slotsOf(string: CauseStringRow, gateways: ReadonlyMap<string, string>): SlotCondition[] {
+  return string.positions.map((position, i) => {
     const at = position - 1;
     const via = string.via?.[at] ?? null;
     const state = string.state?.[at] ?? null;
     return {
       position,
-      serial,
+      serial: string.serials[i] ?? null,
       state: state === null ? null : (UNIT_STATES[state] ?? null),
       verdict: VERDICTS[string.verdict?.[at] ?? 0] ?? 'ok',
       sinceS: string.since?.[at] ?? 0,
       seenS: string.seen?.[at] || null,
-      gateway: via === null ? null : (string.gateways?.[String(via)] ?? `${via}`),
+      gateway: via === null ? null : (gateways.get(`${string.loggerId} ${via}`) ?? `${via}`),
     };
   });
 }
 
 function conditionOf(row: CauseSiteRow, at: Date): SiteCondition {
   const atS = at.getTime() / 1000;
+  const gateways = new Map(row.gateways.map((g) => [`${g.loggerId} ${g.number}`, g.name]));
   return {
     name: row.name,
     atS,
@@ -41,10 +42,14 @@ function conditionOf(row: CauseSiteRow, at: Date): SiteCondition {
       logger: s.logger,
       inverter: s.inverter,
       input: s.input,
-      slots: slotsOf(s),
+      slots: slotsOf(s, gateways),
       finding:
         s.finding && s.evidence
-          ? { kind: s.finding, sinceS: s.findingSinceS ?? s.evidence.atS, evidence: s.evidence }
+          ? {
+              kind: s.finding,
+              sinceS: s.findingSince ? Math.floor(s.findingSince.getTime() / 1000) : s.evidence.atS,
+              evidence: s.evidence,
+            }
           : null,
     })),
     zones: row.zones,
@@ -135,7 +140,7 @@ function causeNow(site: CauseSiteRow, cause: Cause): CauseNow {
 
 /**
  * What explains the units that are not as they should be, at the sites that the actor sees or at those of the given
- * numbers. One statement; the rest is arithmetic on what it brought.
+ * numbers. Three statements at most; the rest is arithmetic on what they brought.
  */
 export async function causesNow(tx: Tx, at: Date, siteIds?: readonly number[]): Promise<CauseNow[]> {
   const sites = await causeSites(tx, siteIds);
