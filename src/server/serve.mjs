@@ -9,6 +9,7 @@ if (!fs.existsSync(at('dist/server/entry.mjs'))) {
   process.stderr.write('There is no build. Run "npm run build" first, or "npm start", which does it.\n');
   process.exit(1);
 }
+if (fs.existsSync(at('.env'))) process.loadEnvFile(at('.env'));
 process.env.NODE_ENV ??= 'production';
 
 let running;
