@@ -11,7 +11,7 @@ import {
 import * as echarts from 'echarts/core';
 import type { ECharts } from 'echarts/core';
 import { CanvasRenderer } from 'echarts/renderers';
-import { useEffect, useMemo, useState } from 'react';
+import { useEffect, useMemo, useRef, useState } from 'react';
 import { onThemeChange, readColours } from './colours';
 import { fromWall } from './local-time';
 import type { ChartModel } from './model';
@@ -59,17 +59,18 @@ export default function Canvas({ model, height, narrow, onReady, onZoom }: Props
   const [colours, setColours] = useState(readColours);
   useEffect(() => onThemeChange(() => requestAnimationFrame(() => setColours(readColours()))), []);
   const option = useMemo(() => chartOptions(model, colours, narrow), [model, colours, narrow]);
-  const events = useMemo(() => {
-    let timer: ReturnType<typeof setTimeout> | undefined;
-    return {
+  const rest = useRef<ReturnType<typeof setTimeout>>(undefined);
+  const events = useMemo(
+    () => ({
       datazoom: (_: unknown, chart: ECharts) => {
-        clearTimeout(timer);
-        timer = setTimeout(() => {
+        clearTimeout(rest.current);
+        rest.current = setTimeout(() => {
           if (!chart.isDisposed()) onZoom(spanInSight(chart, model.timeZone));
         }, REST_MS);
       },
-    };
-  }, [onZoom, model.timeZone]);
+    }),
+    [onZoom, model.timeZone],
+  );
   return (
     <EChartsReactCore
       echarts={echarts}

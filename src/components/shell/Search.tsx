@@ -6,25 +6,25 @@ import { paths } from '../../schemas/paths';
 type Result = SearchReply['results'][number];
 const KIND: Record<Result['kind'], string> = { site: 'Site', string: 'String', unit: 'Unit' };
 
+const NOTHING = { q: '', results: [], note: '' };
+
 /** Asks as the person types, a little behind; an answer to an older question is dropped. */
 function useFound(q: string): { results: Result[]; note: string } {
-  const [found, setFound] = useState<{ results: Result[]; note: string }>({ results: [], note: '' });
+  const [found, setFound] = useState<{ q: string; results: Result[]; note: string }>(NOTHING);
   useEffect(() => {
-    if (q.length < 2) {
-      setFound({ results: [], note: '' });
-      return;
-    }
+    if (q.length < 2) return;
     const stop = new AbortController();
     const timer = setTimeout(() => {
       api<SearchReply>(paths.api.search(), { query: { q }, signal: stop.signal })
         .then(({ results }) =>
           setFound({
+            q,
             results,
             note: results.length ? `${results.length} found` : `Nothing here is called “${q}”`,
           }),
         )
         .catch((error: unknown) => {
-          if (error instanceof ApiError) setFound({ results: [], note: error.message });
+          if (error instanceof ApiError) setFound({ q, results: [], note: error.message });
         });
     }, 150);
     return () => {
@@ -32,7 +32,8 @@ function useFound(q: string): { results: Result[]; note: string } {
       stop.abort();
     };
   }, [q]);
-  return found;
+  // while the next answer is on its way the last one stands
+  return q.length < 2 ? NOTHING : found;
 }
 
 /** Finds a site, string or serial from anywhere. Without scripts the form filters the fleet. */

@@ -147,7 +147,7 @@ export async function energyAgainst(
   const { rows } = await tx.raw<{ rows: { stringId: number; wh: number; reports: number }[] }>(
     `with spaced as (
        select string_id, power_sum,
-              extract(epoch from least(lead(at) over (partition by string_id order by at) - at, interval '5 minutes'))
+              extract(epoch from least(coalesce(lead(at) over (partition by string_id order by at), :to::timestamptz) - at, interval '5 minutes'))
                 ::float8 as seconds
        from string_frame where string_id = any (:ids) and at >= :from and at < :to)
      select string_id as "stringId", coalesce(sum(power_sum / 10.0 * seconds / 3600), 0)::float8 as wh,

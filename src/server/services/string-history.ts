@@ -1,6 +1,7 @@
 import { expectedHistory, type ExpectedHistory } from '../../domain/output/expected-history';
 import { moduleVoltage } from '../../domain/output/expected';
 import { clearSkyInPlane } from '../../domain/photovoltaics/irradiance/clear-sky-plane';
+import { median } from '../../domain/output/robust';
 import { sunRiseSet } from '../../domain/photovoltaics/sun/rise-set';
 import { commandWords, eventWords } from '../../domain/verdicts/event-words';
 import type {
@@ -163,6 +164,15 @@ async function marksOf(tx: Tx, facts: StringFacts, plan: Plan, now: Date): Promi
   return [...stretches, ...instants].sort((a, b) => a.from - b.from);
 }
 
+const SLOWEST_REPORT_S = 600;
+
+/** The spacing beyond which something is missing: from the points themselves, for a logger may report more slowly than its site is set to. */
+function gapFrom(at: readonly number[], stepS: number): number {
+  const spaces = at.slice(1).map((t, i) => t - (at[i] ?? t));
+  const usual = spaces.length > 0 ? Math.min(median(spaces), Math.max(stepS, SLOWEST_REPORT_S)) : stepS;
+  return 2.6 * Math.max(stepS, usual);
+}
+
 /** Puts a null between points that lie further apart than their step allows, so that a gap is drawn as one. */
 export function withGaps(
   points: readonly HistoryPoint[],
@@ -175,9 +185,13 @@ export function withGaps(
     high: [],
     energy: [],
   };
+  const gap = gapFrom(
+    points.map((p) => p.at),
+    stepS,
+  );
   let before = -Infinity;
   for (const p of points) {
-    if (before > 0 && p.at - before > 2.6 * stepS) {
+    if (before > 0 && p.at - before > gap) {
       out.at.push(before + stepS);
       for (const column of [out.voltage, out.low, out.high, out.energy]) column.push(null);
     }
@@ -274,9 +288,13 @@ export async function readUnits(tx: Tx, ref: string, query: UnitsQuery, now: Dat
   const lines = chosen.map((position) => ({ position, values: [] as (number | null)[] }));
   let before = -Infinity;
   const stepS = Math.max(60, facts.reportIntervalS);
+  const gap = gapFrom(
+    rows.map((r) => r.at),
+    stepS,
+  );
   for (const row of rows) {
     if (row.at - before < stepS - 1) continue;
-    if (before > 0 && row.at - before > 2.6 * stepS) {
+    if (before > 0 && row.at - before > gap) {
       at.push(before + stepS);
       for (const line of lines) line.values.push(null);
     }
