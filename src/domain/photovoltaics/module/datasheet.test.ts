@@ -5,6 +5,9 @@ import { moduleFromDatasheet, vocOf } from './datasheet';
 import { type DiodeReference, diodeParameters } from './diode-parameters';
 import { curvePoints, maximumPowerPoint, vocOfDiode } from './single-diode';
 
+/** ms: many runs, on a busy machine. */
+const SLOW = 60_000;
+
 const between = (min: number, max: number) => fc.double({ min, max, noNaN: true, noDefaultInfinity: true });
 
 const sheet: ModuleType = {
@@ -42,49 +45,53 @@ function sheetOf(reference: DiodeReference, cellsInSeries: number): ModuleType {
 
 describe('moduleFromDatasheet', () => {
   // few runs: each fit takes some hundred curves
-  it('finds the five parameters behind a datasheet that five parameters made', () => {
-    const behind = fc
-      .record({
-        ideality: between(0.95, 1.25),
-        vocOfCell: between(0.6, 0.72),
-        photocurrentRef: between(5, 18),
-        resistanceSeries: between(0.1, 0.35),
-        resistanceShuntRef: between(150, 1500),
-        cells: fc.constantFrom(54, 60, 66, 72),
-      })
-      .map(({ ideality, vocOfCell, cells, ...rest }) => {
-        const idealityVoltageRef = ideality * cells * 0.025693;
-        const reference = {
-          ...rest,
-          idealityVoltageRef,
-          alphaIsc: 0.0005 * rest.photocurrentRef,
-          saturationCurrentRef: rest.photocurrentRef * Math.exp((-cells * vocOfCell) / idealityVoltageRef),
-        };
-        return { reference, cells };
-      });
-    fc.assert(
-      fc.property(behind, ({ reference, cells }) => {
-        const { parameters, fit } = moduleFromDatasheet(sheetOf(reference, cells));
-        expect(fit.quality).toBe('good');
-        expect(fit.remarks).toEqual([]);
-        for (const error of [fit.voc, fit.isc, fit.vmp, fit.imp, fit.pmp, fit.betaVoc, fit.gammaPmp]) {
-          expect(Math.abs(error)).toBeLessThan(1e-4);
-        }
-        for (const [poaGlobal, temperature] of [
-          [200, 25],
-          [800, 55],
-          [1100, 70],
-          [400, -10],
-        ] as const) {
-          const true_ = maximumPowerPoint(diodeParameters(reference, poaGlobal, temperature));
-          const fitted = maximumPowerPoint(diodeParameters(parameters, poaGlobal, temperature));
-          expect(Math.abs(fitted.pmp / true_.pmp - 1)).toBeLessThan(0.002);
-          expect(Math.abs(fitted.vmp / true_.vmp - 1)).toBeLessThan(0.002);
-        }
-      }),
-      { numRuns: 12 },
-    );
-  });
+  it(
+    'finds the five parameters behind a datasheet that five parameters made',
+    () => {
+      const behind = fc
+        .record({
+          ideality: between(0.95, 1.25),
+          vocOfCell: between(0.6, 0.72),
+          photocurrentRef: between(5, 18),
+          resistanceSeries: between(0.1, 0.35),
+          resistanceShuntRef: between(150, 1500),
+          cells: fc.constantFrom(54, 60, 66, 72),
+        })
+        .map(({ ideality, vocOfCell, cells, ...rest }) => {
+          const idealityVoltageRef = ideality * cells * 0.025693;
+          const reference = {
+            ...rest,
+            idealityVoltageRef,
+            alphaIsc: 0.0005 * rest.photocurrentRef,
+            saturationCurrentRef: rest.photocurrentRef * Math.exp((-cells * vocOfCell) / idealityVoltageRef),
+          };
+          return { reference, cells };
+        });
+      fc.assert(
+        fc.property(behind, ({ reference, cells }) => {
+          const { parameters, fit } = moduleFromDatasheet(sheetOf(reference, cells));
+          expect(fit.quality).toBe('good');
+          expect(fit.remarks).toEqual([]);
+          for (const error of [fit.voc, fit.isc, fit.vmp, fit.imp, fit.pmp, fit.betaVoc, fit.gammaPmp]) {
+            expect(Math.abs(error)).toBeLessThan(1e-4);
+          }
+          for (const [poaGlobal, temperature] of [
+            [200, 25],
+            [800, 55],
+            [1100, 70],
+            [400, -10],
+          ] as const) {
+            const true_ = maximumPowerPoint(diodeParameters(reference, poaGlobal, temperature));
+            const fitted = maximumPowerPoint(diodeParameters(parameters, poaGlobal, temperature));
+            expect(Math.abs(fitted.pmp / true_.pmp - 1)).toBeLessThan(0.002);
+            expect(Math.abs(fitted.vmp / true_.vmp - 1)).toBeLessThan(0.002);
+          }
+        }),
+        { numRuns: 12 },
+      );
+    },
+    SLOW,
+  );
 
   it('meets an ordinary datasheet and tells how well', () => {
     const { parameters, fit } = moduleFromDatasheet(sheet);

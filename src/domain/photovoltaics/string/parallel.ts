@@ -5,7 +5,7 @@ import type { SeriesString } from './series';
 /** Strings in parallel on one input: they share a voltage, their currents add. */
 export interface ParallelStrings {
   /** V at which no current leaves; strings may feed each other there. */
-  voc: number;
+  readonly voc: number;
   /** A at the inverter, at a common voltage in V. */
   currentAt: (voltage: number) => number;
   /** A of each string at a common voltage: below 0 where the others push current back through it. */
@@ -30,17 +30,21 @@ export function parallelStrings(strings: readonly SeriesString[]): ParallelStrin
     currentsAt(voltage).reduce((sum, current) => sum + current, 0);
   const highest = Math.max(...strings.map((string) => string.voc));
   const lowest = Math.min(0, ...strings.map((string) => string.voc));
-  const voc = strings.length === 1 ? highest : fallingRoot(currentAt, lowest, highest);
-  const atZero = currentAt(0);
+  let balance: number | null = strings.length === 1 ? highest : null;
+  const openCircuit = (): number => (balance ??= fallingRoot(currentAt, lowest, highest));
 
   const voltageAt = (current: number): number => {
+    const atZero = currentAt(0);
     if (!(current >= 0 && current <= atZero)) {
       throw new RangeError(`current must be between 0 and ${atZero} A, but is ${current}`);
     }
-    return current === 0 ? voc : fallingRoot((voltage) => currentAt(voltage) - current, 0, voc);
+    return current === 0
+      ? openCircuit()
+      : fallingRoot((voltage) => currentAt(voltage) - current, 0, openCircuit());
   };
 
   const maximumPowerPoint = (): PowerPoint | null => {
+    const voc = openCircuit();
     const bends = strings.flatMap((string) => [
       string.voc,
       ...string.corners.map((corner) => string.voltageAt(corner)),
@@ -63,5 +67,13 @@ export function parallelStrings(strings: readonly SeriesString[]): ParallelStrin
     }
     return best.value > 0 ? { v: best.at, i: best.value / best.at, p: best.value } : null;
   };
-  return { voc, currentAt, currentsAt, voltageAt, maximumPowerPoint };
+  return {
+    get voc() {
+      return openCircuit();
+    },
+    currentAt,
+    currentsAt,
+    voltageAt,
+    maximumPowerPoint,
+  };
 }

@@ -7,6 +7,9 @@ import { type StringElement, type StringModule, evenly } from './elements';
 import { parallelStrings } from './parallel';
 import { type SeriesString, seriesString, stringVoltageAt } from './series';
 
+/** ms: many runs, on a busy machine. */
+const SLOW = 60_000;
+
 const between = (min: number, max: number) => fc.double({ min, max, noNaN: true, noDefaultInfinity: true });
 
 /** A made-up 60-cell module. */
@@ -96,16 +99,20 @@ const anyElement: fc.Arbitrary<StringElement> = fc.oneof(
 const anyString = fc.array(anyElement, { minLength: 1, maxLength: 14 });
 
 describe('under current', () => {
-  it('is the sum of its parts at any current', () => {
-    fc.assert(
-      fc.property(anyString, between(0, 14), between(0, 2), (elements, current, resistance) => {
-        const whole = ready(elements, resistance).voltageAt(current);
-        const parts = elements.reduce((sum, element) => sum + ready([element]).voltageAt(current), 0);
-        expect(Number.isFinite(whole)).toBe(true);
-        expect(whole).toBeCloseTo(parts - current * resistance, 6);
-      }),
-    );
-  });
+  it(
+    'is the sum of its parts at any current',
+    () => {
+      fc.assert(
+        fc.property(anyString, between(0, 14), between(0, 2), (elements, current, resistance) => {
+          const whole = ready(elements, resistance).voltageAt(current);
+          const parts = elements.reduce((sum, element) => sum + ready([element]).voltageAt(current), 0);
+          expect(Number.isFinite(whole)).toBe(true);
+          expect(whole).toBeCloseTo(parts - current * resistance, 6);
+        }),
+      );
+    },
+    SLOW,
+  );
 
   it('falls with current, and gives current and voltage as one curve', () => {
     fc.assert(
@@ -164,18 +171,22 @@ describe('under current', () => {
     );
   });
 
-  it('finds the highest of several peaks', () => {
-    fc.assert(
-      fc.property(anyString, between(0, 1), (elements, share) => {
-        const curve = stringCurveOf(elements, 0, 2);
-        if (!curve) throw new Error('a lead is open');
-        const current = share * curve.isc;
-        const power = current * ready(elements).voltageAt(current);
-        expect(power).toBeLessThanOrEqual((curve.mpp?.p ?? 0) * (1 + 1e-6) + 1e-6);
-        for (const point of curve.points) expect(Number.isFinite(point.v)).toBe(true);
-      }),
-    );
-  });
+  it(
+    'finds the highest of several peaks',
+    () => {
+      fc.assert(
+        fc.property(anyString, between(0, 1), (elements, share) => {
+          const curve = stringCurveOf(elements, 0, 2);
+          if (!curve) throw new Error('a lead is open');
+          const current = share * curve.isc;
+          const power = current * ready(elements).voltageAt(current);
+          expect(power).toBeLessThanOrEqual((curve.mpp?.p ?? 0) * (1 + 1e-6) + 1e-6);
+          for (const point of curve.points) expect(Number.isFinite(point.v)).toBe(true);
+        }),
+      );
+    },
+    SLOW,
+  );
 
   it('refuses by name', () => {
     expect(() => seriesString([passing()], -1)).toThrow(/resistance/);
@@ -202,24 +213,28 @@ describe('strings in parallel', () => {
     expect(alone.voltageAt(5)).toBeCloseTo(full.voltageAt(5), 6);
   });
 
-  it('share a voltage and add their currents', () => {
-    fc.assert(
-      fc.property(
-        fc.array(anyString, { minLength: 1, maxLength: 3 }),
-        between(0, 500),
-        (strings, voltage) => {
-          const input = parallelStrings(strings.map((elements) => ready(elements, 0.05)));
-          const currents = input.currentsAt(voltage);
-          expect(currents.every(Number.isFinite)).toBe(true);
-          expect(input.currentAt(voltage)).toBeCloseTo(
-            currents.reduce((sum, current) => sum + current, 0),
-            9,
-          );
-        },
-      ),
-      { numRuns: 50 },
-    );
-  });
+  it(
+    'share a voltage and add their currents',
+    () => {
+      fc.assert(
+        fc.property(
+          fc.array(anyString, { minLength: 1, maxLength: 3 }),
+          between(0, 500),
+          (strings, voltage) => {
+            const input = parallelStrings(strings.map((elements) => ready(elements, 0.05)));
+            const currents = input.currentsAt(voltage);
+            expect(currents.every(Number.isFinite)).toBe(true);
+            expect(input.currentAt(voltage)).toBeCloseTo(
+              currents.reduce((sum, current) => sum + current, 0),
+              9,
+            );
+          },
+        ),
+        { numRuns: 30 },
+      );
+    },
+    SLOW,
+  );
 
   it('give no more than each would alone', () => {
     const held = ready([...times(9, passing()), ...times(3, inShutdown)]);
