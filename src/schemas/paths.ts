@@ -20,6 +20,7 @@ export const paths = {
     site: (site: string) => `/api/sites/${site}`,
     siteEvents: (site: string) => `/api/sites/${site}/events`,
     acknowledge: (site: string) => `/api/sites/${site}/acknowledge`,
+    siteTraces: (site: string) => `/api/sites/${site}/traces`,
     string: (string: string) => `/api/strings/${string}`,
     stringHistory: (string: string) => `/api/strings/${string}/history`,
     stringHistoryCsv: (string: string) => `/api/strings/${string}/history.csv`,

@@ -125,6 +125,7 @@ export const ROUTES: readonly Route[] = [
     'site',
     (t) => `/api/sites/${t.site}/roll-call/units.csv`,
   ),
+  get('api/sites/[site]/traces.ts', 'string.read', 'site', (t) => `/api/sites/${t.site}/traces`),
   get('api/strings/[string]/index.ts', 'string.read', 'string', (t) => `/api/strings/${t.string}`),
   get('api/strings/[string]/history.ts', 'string.read', 'string', (t) => `/api/strings/${t.string}/history`),
   get(

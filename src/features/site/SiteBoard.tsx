@@ -2,6 +2,7 @@ import { useQuery } from '@tanstack/react-query';
 import { useMemo } from 'react';
 import { CauseSheet } from '../../components/causes/CauseSheet';
 import { byGravity } from '../../components/causes/words';
+import { TraceSheet } from '../../components/trace/TraceSheet';
 import { Button } from '../../components/ui/Button';
 import { Caution } from '../../components/ui/Caution';
 import { Heading } from '../../components/ui/Heading';
@@ -128,6 +129,7 @@ export function SiteBoard({ initial, events, kind: initialKind }: Props) {
         <NowSheet page={page} now={now} zone={zone} />
         <ZonesSheet zones={page.zones} now={now} timeZone={timeZone} zone={zone} />
         <StringsSheet site={id} strings={page.strings} />
+        <TraceSheet siteId={id} timeZone={timeZone} />
         <InvertersSheet inverters={page.inverters} now={now} timeZone={timeZone} zone={zone} />
         <div className="grid items-start gap-6 xl:grid-cols-2">
           <EventsSheet

@@ -6,6 +6,7 @@ import { LiveMark } from '../../components/ui/Live';
 import { Notice } from '../../components/ui/Notice';
 import { energy } from '../../drawings/numbers';
 import { clock } from '../../drawings/times';
+import { TraceSheet } from '../../components/trace/TraceSheet';
 import { Sheet } from '../../components/ui/Sheet';
 import { useLive } from '../../lib/live-hook';
 import { queryClient } from '../../lib/query-client';
@@ -100,6 +101,7 @@ function Page({ page: initial, history }: Props) {
         <div className="flex min-w-0 flex-col gap-5">
           <StaircaseSheet page={page} />
           <HistorySheet id={string.id} initial={history} today={page.at} />
+          <TraceSheet siteId={site.id} stringId={string.id} timeZone={site.timeZone} />
         </div>
         <div className="flex min-w-0 flex-col gap-5">
           {readings.main && <ReadingsSheet readings={readings} />}

@@ -1,0 +1,123 @@
+import { useQuery } from '@tanstack/react-query';
+import { Sheet } from '../ui/Sheet';
+import { Table, type Column } from '../ui/Table';
+import { TraceLines } from '../../drawings/TraceLines';
+import { UNKNOWN, volts } from '../../drawings/numbers';
+import { clockOrDate, clockSeconds, fullTime } from '../../drawings/times';
+import { commandWords } from '../../domain/verdicts/event-words';
+import { api } from '../../lib/api';
+import { useLive } from '../../lib/live-hook';
+import { queryClient } from '../../lib/query-client';
+import { paths } from '../../schemas/paths';
+import type { SiteTraces } from '../../schemas/api/trace';
+import { POINT_WORDS, bestTraces, factsOf, traceWords, type TraceFacts } from './model';
+
+interface Props {
+  siteId: string;
+  /** Only this string's traces; absent: the whole site's. */
+  stringId?: string;
+  timeZone: string;
+}
+
+/** A trace grows for two minutes after a command; a while longer for what comes late. */
+const GROWS_MS = 150_000;
+const EVERY_MS = 2000;
+
+const columns = (limit: SiteTraces['limit']): Column<TraceFacts>[] => [
+  {
+    key: 'string',
+    label: 'String',
+    cell: (f) => <span className="font-semibold">{f.trace.stringName}</span>,
+  },
+  { key: 'first', label: 'At the command', numeric: true, cell: (f) => volts(f.first) },
+  { key: 'last', label: 'Newest', numeric: true, cell: (f) => volts(f.last) },
+  {
+    key: 'under',
+    label: `${limit.voltage} V or less`,
+    numeric: true,
+    cell: (f) =>
+      f.underFromS === null ? UNKNOWN : f.underFromS === 0 ? 'from the start' : `after ${f.underFromS} s`,
+  },
+  {
+    key: 'point',
+    label: 'Measured',
+    from: 'md',
+    className: 'text-ink-2',
+    cell: (f) => `${POINT_WORDS[f.trace.measuringPoint]}, ±${volts(f.trace.accuracy)}`,
+  },
+];
+
+/** Second by second after the newest command: lines, a sentence, and the same as a table. */
+export function TraceSheet({ siteId, stringId, timeZone }: Props) {
+  const client = queryClient();
+  const key = ['traces', siteId, stringId ?? 'all'];
+  const { data, error } = useQuery(
+    {
+      queryKey: key,
+      queryFn: ({ signal }) =>
+        api<SiteTraces>(paths.api.siteTraces(siteId), { query: { string: stringId }, signal }),
+      refetchInterval: (query) => {
+        const read = query.state.data;
+        const since = read?.command?.since ?? read?.startedAt;
+        return read && since && Date.parse(read.at) - Date.parse(since) < GROWS_MS ? EVERY_MS : false;
+      },
+    },
+    client,
+  );
+  useLive(stringId ? `string:${stringId}` : `site:${siteId}`, (change, kind) => {
+    if (kind === 'delta' && change.events?.some((e) => e.kind === 'command'))
+      // the first seconds of a trace follow the command
+      for (const afterMs of [0, 2500, 5000, 10_000])
+        setTimeout(() => void client.invalidateQueries({ queryKey: key }), afterMs);
+  });
+  if (!data?.startedAt || data.traces.length === 0) return null;
+  const { command, limit, startedAt } = data;
+  const facts = bestTraces(data.traces).map((t) => factsOf(t, limit.voltage));
+  const words = traceWords(data);
+  const drawn = {
+    lines: facts.map((f) => ({
+      name: f.trace.stringName,
+      voltage: f.trace.voltage,
+      tone: (f.last ?? 0) > limit.voltage ? ('passing' as const) : ('shutdown' as const),
+    })),
+    limit,
+    label: `Voltage in the seconds after ${clockSeconds(startedAt, timeZone)}. ${words}`,
+  };
+  return (
+    <Sheet
+      id="trace"
+      title="Second by second"
+      flush
+      aside={
+        <time dateTime={startedAt} title={fullTime(startedAt, timeZone)}>
+          {command ? `${command.where}: ${commandWords(command.inForce)}, ` : ''}
+          {clockOrDate(startedAt, data.at, timeZone).replace(/\d\d:\d\d$/, '')}
+          {clockSeconds(startedAt, timeZone)}
+        </time>
+      }
+    >
+      <p className="mb-3">{words}</p>
+      <div className="hidden sm:block">
+        <TraceLines {...drawn} width={720} height={250} />
+      </div>
+      <div className="sm:hidden">
+        <TraceLines {...drawn} width={360} height={220} />
+      </div>
+      <details className="mt-2">
+        <summary className="inline-flex min-h-[36px] cursor-pointer items-center text-sm underline underline-offset-2">
+          The same as a table
+        </summary>
+        <Table
+          caption={`Voltages after the command of ${clockSeconds(startedAt, timeZone)}`}
+          columns={columns(limit)}
+          rows={facts}
+          rowKey={(f) => f.trace.stringId}
+        />
+      </details>
+      <p className="mt-2 text-sm text-ink-2">
+        Reports of units and inverters are no test: only a rated meter at the home run shows that a string is
+        dead. Time limit: {limit.source}.{error && ' The newest seconds could not be read.'}
+      </p>
+    </Sheet>
+  );
+}

@@ -1,0 +1,172 @@
+import type { Browser, Page } from 'playwright-core';
+import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import type { Role } from '../../src/domain/access/permissions';
+import { axeFaults } from '../support/axe';
+import { startBrowser } from '../support/browser';
+import { testDatabase, type TestDatabase } from '../support/database';
+import { PASSWORD, testFleet, type TestFleet } from '../support/fleet';
+import { signInAt, startSite, type RunningSite } from '../support/server';
+import { command, stand } from '../support/standing';
+import { ROUTES } from '../access/routes';
+
+/** Every page, for somebody who may see it: axe, the console, the width of the screen. */
+const HALL = 'Old Tannery Market Hall';
+const CLINIC = 'Weirside Clinic';
+const SCHOOL = 'Kestrel Row School';
+const GALLERY = 'Coopers Wharf Gallery';
+
+let db: TestDatabase;
+let fleet: TestFleet;
+let site: RunningSite;
+let browser: Browser;
+
+beforeAll(async () => {
+  db = await testDatabase();
+  fleet = await testFleet(db, [HALL, CLINIC, SCHOOL, GALLERY, 'Slate Lane Library']);
+  // a moment ago: the running site judges what has long been silent for itself
+  const at = new Date();
+  await stand(db.owner, fleet.site(HALL), at, (string) => (string === 'B4' ? { state: 'unheard' } : null));
+  await stand(db.owner, fleet.site(CLINIC), at);
+  await stand(db.owner, fleet.site(SCHOOL), at, (string, position) =>
+    string === 'A1' && position < 3 ? { state: 'shutdown', verdict: 'stuck' } : null,
+  );
+  const [zone] = [...fleet.site(SCHOOL).zones.keys()];
+  if (zone) await command(db.owner, fleet.site(SCHOOL), zone, 'initiator', new Date(at.getTime() - 600_000));
+  site = await startSite(db, { WAKELINE_ROLES: 'web' });
+  browser = await startBrowser();
+});
+afterAll(async () => {
+  await browser.close();
+  await site.stop();
+  await db.drop();
+});
+
+interface Look {
+  width: number;
+  scheme: 'light' | 'dark';
+}
+const LOOKS: readonly Look[] = [
+  { width: 1440, scheme: 'light' },
+  { width: 1440, scheme: 'dark' },
+  { width: 390, scheme: 'light' },
+  { width: 390, scheme: 'dark' },
+];
+const sessions = new Map<Role, string>();
+async function pageFor(role: Role | null): Promise<Page> {
+  const context = await browser.newContext({ reducedMotion: 'reduce' });
+  if (role) {
+    const known = sessions.get(role) ?? (await signInAt(site.url, `${role}@lowfield.example`, PASSWORD));
+    sessions.set(role, known);
+    const [name = '', value = ''] = known.split('=');
+    await context.addCookies([{ name, value, url: site.url }]);
+  }
+  return context.newPage();
+}
+
+interface Shown {
+  name: string;
+  role: Role | null;
+  path: () => string;
+  /** Of which file under src/pages. */
+  file: string;
+  status?: number;
+}
+const refOf = (name: string) => fleet.site(name).ref;
+const stringOf = (name: string, string: string) => fleet.site(name).strings.get(string)?.ref ?? '';
+const PAGES: readonly Shown[] = [
+  { name: 'fleet', role: 'analyst', path: () => '/', file: 'index.astro' },
+  { name: 'shutdown', role: 'analyst', path: () => '/shutdown', file: 'shutdown.astro' },
+  { name: 'status', role: 'manager', path: () => '/status', file: 'status.astro' },
+  {
+    name: 'site',
+    role: 'technician',
+    path: () => `/sites/${refOf(SCHOOL)}`,
+    file: 'sites/[site]/index.astro',
+  },
+  {
+    name: 'site of shutdown-only units',
+    role: 'technician',
+    path: () => `/sites/${refOf(GALLERY)}`,
+    file: 'sites/[site]/index.astro',
+  },
+  {
+    name: 'string',
+    role: 'analyst',
+    path: () => `/sites/${refOf(SCHOOL)}/strings/${stringOf(SCHOOL, 'A1')}`,
+    file: 'sites/[site]/strings/[string].astro',
+  },
+  {
+    name: 'commissioning',
+    role: 'technician',
+    path: () => '/commissioning',
+    file: 'commissioning/index.astro',
+  },
+  {
+    name: 'roll call, for somebody who may start it',
+    role: 'technician',
+    path: () => `/commissioning/${refOf(HALL)}/roll-call`,
+    file: 'commissioning/[site]/roll-call.astro',
+  },
+  {
+    name: 'roll call, for somebody who reads',
+    role: 'analyst',
+    path: () => `/commissioning/${refOf(HALL)}/roll-call?strings=missing`,
+    file: 'commissioning/[site]/roll-call.astro',
+  },
+  { name: 'the roofs of an owner', role: 'customer', path: () => '/my-site', file: 'my-site/index.astro' },
+  { name: 'a roof', role: 'customer', path: () => `/my-site/${refOf(CLINIC)}`, file: 'my-site/[site].astro' },
+  { name: 'sign-in', role: null, path: () => '/sign-in', file: 'sign-in.astro' },
+  { name: 'nothing here', role: 'analyst', path: () => '/nothing-here', file: '404.astro', status: 404 },
+  {
+    name: 'a refusal',
+    role: 'customer',
+    path: () => '/shutdown',
+    file: 'problem.astro',
+    status: 403,
+  },
+];
+
+/** Everything that is wrong with a page, in each look; empty: nothing. */
+async function faultsOf(page: Page, shown: Shown): Promise<string[]> {
+  const faults: string[] = [];
+  page.on('console', (m) => {
+    // the browser itself reports the status of a page that is meant to be refused
+    if (m.type() === 'error' && !(shown.status && /status of \d+/.test(m.text())))
+      faults.push(`console: ${m.text()}`);
+  });
+  page.on('pageerror', (e) => faults.push(`script: ${e.message}`));
+  const response = await page.goto(site.url + shown.path(), { waitUntil: 'load' });
+  if (response?.status() !== (shown.status ?? 200)) faults.push(`status ${response?.status()}`);
+  // islands take over without a word in the console
+  await page.waitForFunction(
+    () => document.querySelectorAll('astro-island[ssr][client="load"]').length === 0,
+  );
+  const headings = await page.locator('h1').count();
+  if (headings !== 1) faults.push(`${headings} headings of the first level`);
+  for (const look of LOOKS) {
+    await page.setViewportSize({ width: look.width, height: 900 });
+    await page.emulateMedia({ colorScheme: look.scheme });
+    const wider = await page.evaluate(
+      () => document.documentElement.scrollWidth - document.documentElement.clientWidth,
+    );
+    const found = [...(wider > 0 ? [`${wider} px wider than the screen`] : []), ...(await axeFaults(page))];
+    faults.push(...found.map((f) => `${look.width} px, ${look.scheme}: ${f}`));
+  }
+  return faults;
+}
+
+describe('on a phone and a desk, in light and dark', () => {
+  it.each(PAGES)('$name', async (shown) => {
+    const page = await pageFor(shown.role);
+    try {
+      expect(await faultsOf(page, shown)).toEqual([]);
+    } finally {
+      await page.context().close();
+    }
+  });
+});
+
+it('no page is left out', () => {
+  const pages = ROUTES.filter((r) => r.file.endsWith('.astro') && r.file !== '500.astro').map((r) => r.file);
+  expect([...new Set(PAGES.map((p) => p.file))].sort()).toEqual([...new Set(pages)].sort());
+});

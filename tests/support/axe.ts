@@ -1,0 +1,23 @@
+import { createRequire } from 'node:module';
+import type { AxeResults } from 'axe-core';
+import type { Page } from 'playwright-core';
+
+const AXE = createRequire(import.meta.url).resolve('axe-core/axe.min.js');
+const TAGS = ['wcag2a', 'wcag2aa', 'wcag21a', 'wcag21aa', 'wcag22aa', 'best-practice'];
+
+/** What axe finds against WCAG 2.2 AA and its best practices, one line a fault; empty: nothing. */
+export async function axeFaults(page: Page): Promise<string[]> {
+  await page.addScriptTag({ path: AXE });
+  const results = await page.evaluate(
+    (tags) =>
+      (globalThis as unknown as { axe: { run: (o: unknown) => Promise<AxeResults> } }).axe.run({
+        runOnly: { type: 'tag', values: tags },
+      }),
+    TAGS,
+  );
+  return results.violations.flatMap((v) =>
+    v.nodes.map(
+      (n) => `${v.id}: ${n.target.join(' ')} (${n.failureSummary?.split('\n')[1]?.trim() ?? v.help})`,
+    ),
+  );
+}
