@@ -30,7 +30,11 @@ export class CopyInto {
     const text = this.buffer.join('\n') + '\n';
     this.buffer = [];
     this.size = 0;
-    if (!this.stream.write(text)) await once(this.stream, 'drain');
+    await this.send(text);
+  }
+
+  async send(block: string | Buffer): Promise<void> {
+    if (!this.stream.write(block)) await once(this.stream, 'drain');
   }
 
   async close(): Promise<void> {
@@ -40,18 +44,40 @@ export class CopyInto {
   }
 }
 
+/** Rows that wait for their COPY, as bytes: hundreds of thousands of texts would keep the collector busy. */
+export class WaitingRows {
+  private readonly blocks: Buffer[] = [];
+  private open: string[] = [];
+  private size = 0;
+
+  push(line: string): void {
+    this.open.push(line);
+    this.size += line.length;
+    if (this.size > 131_072) this.seal();
+  }
+
+  private seal(): void {
+    if (this.open.length === 0) return;
+    this.blocks.push(Buffer.from(this.open.join('\n') + '\n'));
+    this.open = [];
+    this.size = 0;
+  }
+
+  all(): readonly Buffer[] {
+    this.seal();
+    return this.blocks;
+  }
+}
+
 /** Copies rows that were gathered in memory. */
 export async function copyRows(
   transaction: Knex.Transaction,
   table: string,
   columns: string[],
-  lines: string[],
+  rows: WaitingRows,
 ): Promise<void> {
   const copy = await CopyInto.open(transaction, table, columns);
-  for (const line of lines) {
-    copy.write(line);
-    await copy.breathe();
-  }
+  for (const block of rows.all()) await copy.send(block);
   await copy.close();
 }
 

@@ -4,7 +4,7 @@ import { planeLight } from '../../simulator/weather/plane-light';
 import { Sky } from '../../simulator/weather/sky';
 import { known } from '../plant/rows';
 import { arrayField } from './copy';
-import type { SiteHistory } from './site-history';
+import type { Lines, SiteHistory } from './site-history';
 import { localDays } from './quarters';
 
 export const DAYS = 270;
@@ -30,12 +30,11 @@ export function writeDays(
   fleet: FleetPlan,
   organisation: OrganisationPlan,
   history: SiteHistory,
-): { stringDays: string[]; siteDays: string[] } {
+  { stringDays, siteDays }: Pick<Lines, 'stringDays' | 'siteDays'>,
+): void {
   const { site } = history;
   const { plan } = site;
   const localDay = localDays(plan.timeZone);
-  const stringDays: string[] = [];
-  const siteDays: string[] = [];
   const today = localDay(fleet.since);
   const sky = new Sky(plan, fleet.seed, fleet.since);
   const firstS =
@@ -113,7 +112,6 @@ export function writeDays(
       ].join('\t'),
     );
   }
-  return { stringDays, siteDays };
 }
 
 function line(

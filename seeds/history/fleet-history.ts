@@ -1,8 +1,8 @@
 import type { Knex } from 'knex';
-import type { FleetPlan } from '../../simulator/plant/plan';
+import { unitsOf, type FleetPlan } from '../../simulator/plant/plan';
 import { known } from '../plant/rows';
 import type { SeededPlant } from '../plant/seeded';
-import { CopyInto, copyRows } from './copy';
+import { CopyInto, copyRows, WaitingRows } from './copy';
 import { writeDays } from './days';
 import { QUARTER_COLUMNS, QUARTER_S } from './quarters';
 import {
@@ -19,14 +19,25 @@ const DAY_S = 86_400;
 const day = (epochS: number) => new Date(epochS * 1000).toISOString().slice(0, 10);
 
 /** Writes the past of every site: months of days, a month of quarters, two days of minutes, and what people did. */
-export async function seedHistory(tx: Knex.Transaction, fleet: FleetPlan, plant: SeededPlant): Promise<void> {
+export async function seedHistory(
+  tx: Knex.Transaction,
+  fleet: FleetPlan,
+  plant: SeededPlant,
+  say: (line: string) => void = () => undefined,
+): Promise<void> {
   await tx.raw('select ensure_days(?::date, ?::date)', [
     day(fleet.since - QUARTERS_S - DAY_S),
     day(fleet.since + 3 * DAY_S),
   ]);
-  const lines: Lines = { quarters: [], inputs: [], inverters: [], weather: [] };
-  const stringDays: string[] = [];
-  const siteDays: string[] = [];
+  const lines: Lines = {
+    quarters: new WaitingRows(),
+    inputs: new WaitingRows(),
+    inverters: new WaitingRows(),
+    weather: new WaitingRows(),
+    siteQuarters: new WaitingRows(),
+    stringDays: new WaitingRows(),
+    siteDays: new WaitingRows(),
+  };
   const histories: SiteHistory[] = [];
   const minutesFromS = Math.floor((fleet.since - MINUTES_S) / QUARTER_S) * QUARTER_S;
   const untilS = Math.floor(fleet.since / 60) * 60;
@@ -38,13 +49,13 @@ export async function seedHistory(tx: Knex.Transaction, fleet: FleetPlan, plant:
       history.runMonth(minutesFromS);
       await history.runMinutes(minutesFromS, untilS, frames);
       history.siteRollUp.close();
-      const days = writeDays(fleet, organisation, history);
-      stringDays.push(...days.stringDays);
-      siteDays.push(...days.siteDays);
+      writeDays(fleet, organisation, history, lines);
       histories.push(history);
+      say(`${plan.name}: ${unitsOf(plan)} units, two days of minutes, a month of quarters`);
     }
   await frames.close();
 
+  say('writing roll-ups, inputs, inverters and weather');
   await copyRows(tx, 'string_quarter', QUARTER_COLUMNS, lines.quarters);
   await copyRows(tx, 'input_frame', ['at', 'input_id', 'voltage', 'current'], lines.inputs);
   await copyRows(
@@ -73,7 +84,7 @@ export async function seedHistory(tx: Knex.Transaction, fleet: FleetPlan, plant:
     tx,
     'string_day',
     ['day', 'string_id', 'site_id', 'frames', 'voltage_avg', 'voltage_max', 'energy', 'unit_energy'],
-    stringDays,
+    lines.stringDays,
   );
   await copyRows(
     tx,
@@ -88,14 +99,9 @@ export async function seedHistory(tx: Knex.Transaction, fleet: FleetPlan, plant:
       'lost_minutes_grid',
       'complete',
     ],
-    siteDays,
+    lines.siteDays,
   );
-  await copyRows(
-    tx,
-    'site_quarter',
-    ['at', 'site_id', 'ac_power', 'poa_insolation'],
-    histories.flatMap((h) => h.siteRollUp.quarters),
-  );
+  await copyRows(tx, 'site_quarter', ['at', 'site_id', 'ac_power', 'poa_insolation'], lines.siteQuarters);
 
   for (const organisation of fleet.organisations) {
     const worker = organisation.people.find((p) => p.role === 'technician') ?? organisation.people[0];

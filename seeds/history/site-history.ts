@@ -4,13 +4,13 @@ import { frameOf, inputRows, inverterRows, radioOf, weatherRows } from '../../si
 import type { Frame } from '../../src/schemas/ingest';
 import { known } from '../plant/rows';
 import type { SeededSite } from '../plant/seeded';
-import { arrayField, field, instant, type CopyInto } from './copy';
+import { arrayField, field, instant, type CopyInto, type WaitingRows } from './copy';
 import { SiteRollUp } from './site-roll-up';
 import { localDays, StringRollUp } from './quarters';
 
 export const MINUTES_S = 2 * 86_400;
 export const QUARTERS_S = 31 * 86_400;
-const COARSE_STEP_S = 1800;
+const COARSE_STEP_S = 3600;
 /** Degrees of the sun's elevation below which the seed writes a night's sparse rows. */
 const NIGHT = -3;
 
@@ -23,10 +23,13 @@ export interface Newest {
 
 /** Lines for COPY that wait in memory while the frames stream. */
 export interface Lines {
-  quarters: string[];
-  inputs: string[];
-  inverters: string[];
-  weather: string[];
+  quarters: WaitingRows;
+  inputs: WaitingRows;
+  inverters: WaitingRows;
+  weather: WaitingRows;
+  siteQuarters: WaitingRows;
+  stringDays: WaitingRows;
+  siteDays: WaitingRows;
 }
 
 /** One site's past by running its simulated plant: quarters of a month, minutes of two days. */
@@ -62,14 +65,14 @@ export class SiteHistory {
         ),
       ]),
     );
-    this.siteRollUp = new SiteRollUp(site.id, localDay);
+    this.siteRollUp = new SiteRollUp(site.id, localDay, lines.siteQuarters);
   }
 
   stringId(name: string): number {
     return known(this.site.strings, name, 'the string').id;
   }
 
-  /** The month before the minutes: a sample each half hour, quarters between them by straight lines. */
+  /** The month before the minutes: a sample each hour, quarters between them by straight lines. */
   runMonth(untilS: number): void {
     if (!this.hasMonths) return;
     const { plant } = this;
@@ -85,18 +88,16 @@ export class SiteHistory {
         grid: plant.inverters.some((i) => i.status === 'grid_lost'),
       };
       if (before)
-        for (const [offset, share] of [
-          [-COARSE_STEP_S, 0.25],
-          [-COARSE_STEP_S / 2, 0.75],
-        ] as const) {
+        for (const share of [0.125, 0.375, 0.625, 0.875]) {
+          const quarterS = atS - COARSE_STEP_S + (share - 0.125) * COARSE_STEP_S;
           const between = (a: number, b: number) => a + (b - a) * share;
           const last = before;
           plant.strings.forEach((s, k) => {
             const volts = Math.round(between(last.volts[k]!, now.volts[k]!));
             const watts = Math.round(between(last.watts[k]!, now.watts[k]!));
-            if (volts > 0) this.rollUps.get(s.plan.name)?.add(atS + offset, 15, volts, watts, null);
+            if (volts > 0) this.rollUps.get(s.plan.name)?.add(quarterS, 15, volts, watts, null);
           });
-          this.siteRollUp.add(atS + offset, 15, {
+          this.siteRollUp.add(quarterS, 15, {
             ac: between(last.ac, now.ac),
             poa: between(last.poa, now.poa),
             gridLost: now.grid,
@@ -214,14 +215,11 @@ export function sumsOf(frame: Frame): { voltage: number; power: number } {
 
 /** The mask of the units that reported, as a decimal number (up to 63 bits). */
 export function maskOf(frame: Frame): string {
-  let low = 0;
-  let high = 0;
-  for (let i = 0; i < frame.state.length; i++)
-    if (frame.state[i] !== null) {
-      if (i < 32) low += 2 ** i;
-      else high += 2 ** (i - 32);
-    }
-  return high === 0 ? String(low) : ((BigInt(high) << 32n) | BigInt(low)).toString();
+  const n = frame.state.length;
+  if (n <= 52 && !frame.state.includes(null)) return String(2 ** n - 1);
+  let mask = 0n;
+  for (let i = 0; i < n; i++) if (frame.state[i] !== null) mask |= 1n << BigInt(i);
+  return mask.toString();
 }
 
 export const FRAME_COLUMNS = [

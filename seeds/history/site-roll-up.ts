@@ -1,9 +1,8 @@
-import { instant } from './copy';
+import { instant, type WaitingRows } from './copy';
 import { QUARTER_S } from './quarters';
 
 /** What a site made, quarter by quarter and by local day. */
 export class SiteRollUp {
-  readonly quarters: string[] = [];
   readonly days = new Map<string, { energyAc: number; lost: number; lostGrid: number; minutes: number }>();
   private atS = NaN;
   private minutes = 0;
@@ -13,6 +12,7 @@ export class SiteRollUp {
   constructor(
     private readonly siteId: number,
     private readonly localDay: (atS: number) => string,
+    private readonly quarters: WaitingRows,
   ) {}
 
   /** @param now W and W/m², holding for `minutes` from `atS` */
