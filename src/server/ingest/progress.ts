@@ -4,7 +4,7 @@ export type Progress =
       served: true;
       /** When it last said anything. */
       spokeS: number;
-      /** Its newest frame since it connected; 0: none yet. */
+      /** Its newest report of anything since it connected; 0: none yet. */
       newestS: number;
     }
   /** Not connected here, at least since `sinceS`. */

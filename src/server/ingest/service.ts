@@ -12,7 +12,7 @@ import {
   tellLostLoggers,
   type KnownLogger,
 } from '../queries/ingest-loggers';
-import { CHANNELS } from '../queries/live-notices';
+import { CHANNELS, readLeased, readWritten } from '../queries/live-notices';
 import { currentRoster, rosterVersion } from '../queries/roster';
 import type { Batch } from './batch';
 import { Judgement } from './judgement';
@@ -188,11 +188,11 @@ export class Ingest implements SessionHost {
       this.judgement.reload(Number(payload));
       this.later(() => this.renewRosters(Number(payload)));
     } else if (channel === CHANNELS.leased) {
-      const { logger, by } = JSON.parse(payload) as { logger: number; by: string };
-      if (by !== this.process) this.letGo(logger);
+      const leased = readLeased(payload);
+      if (leased && leased.by !== this.process) this.letGo(leased.logger);
     } else if (channel === CHANNELS.written) {
-      const { site, by } = JSON.parse(payload) as { site: number; by: string };
-      if (by !== this.judgement.id) this.judgement.reload(site);
+      const written = readWritten(payload);
+      if (written && written.by !== this.judgement.id) this.judgement.reload(written.site);
     }
   }
 

@@ -37,7 +37,7 @@ const versionOnly = z.object({ type: z.literal('hello'), protocol: z.unknown() }
 export class Session {
   /** Wall-clock ms of the newest message. */
   spokeAt = Date.now();
-  /** Epoch s of the newest frame: how far the logger's reports have come. */
+  /** Epoch s of the newest report of anything: how far the logger's reports have come. */
   newestS = 0;
   private readonly views = new Map<number, RosterView>();
   private current: RosterView | undefined;
@@ -223,7 +223,8 @@ export class Session {
       return;
     }
     const { work, readings, gateways } = read.value;
-    if (work.kind === 'frames') for (const { at } of work.rows) this.newestS = Math.max(this.newestS, at);
+    // by night only inverters and sensors report: they too show how far this logger's time has come
+    for (const row of work.rows) if ('at' in row) this.newestS = Math.max(this.newestS, row.at);
     this.host.enqueue({
       work,
       readings,

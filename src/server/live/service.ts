@@ -4,7 +4,7 @@ import { CLOSE_SIGNED_OUT } from '../../schemas/live';
 import { actorOfCookie } from '../auth/sessions';
 import { isDatabaseAway } from '../errors';
 import { log } from '../log';
-import { CHANNELS, type Changed } from '../queries/live-notices';
+import { CHANNELS, readChanged } from '../queries/live-notices';
 import { Connection, type Subscription } from './connection';
 import { Listener } from './listener';
 import { readRound } from './round';
@@ -95,9 +95,9 @@ export class LiveHub {
   private notice(channel: string, payload: string): void {
     if (this.connections.size === 0) return;
     if (channel === CHANNELS.changed) {
-      const { sites, strings } = JSON.parse(payload) as Changed;
-      for (const id of sites) this.sites.add(id);
-      for (const id of strings) this.strings.add(id);
+      const changed = readChanged(payload);
+      for (const id of changed?.sites ?? []) this.sites.add(id);
+      for (const id of changed?.strings ?? []) this.strings.add(id);
     } else this.sites.add(Number(payload));
     this.wake();
   }

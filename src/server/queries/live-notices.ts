@@ -1,4 +1,5 @@
 import type { Knex } from 'knex';
+import { z } from 'zod';
 
 /**
  * What processes tell each other: NOTIFY with the database's own numbers, never data. A notice is a wake-up; whoever
@@ -17,10 +18,22 @@ export const CHANNELS = {
   written: 'written',
 } as const;
 
-export interface Changed {
-  sites: number[];
-  strings: number[];
+const changed = z.object({ sites: z.array(z.int()).default([]), strings: z.array(z.int()).default([]) });
+export type Changed = z.infer<typeof changed>;
+const lease = z.object({ logger: z.int(), by: z.string() });
+const written = z.object({ site: z.int(), by: z.string() });
+
+/** A notice as this version understands it; anybody may notify, so what is unreadable is nothing. */
+function read<T extends z.ZodType>(schema: T, payload: string): z.infer<T> | undefined {
+  try {
+    return schema.safeParse(JSON.parse(payload)).data;
+  } catch {
+    return undefined; // no JSON: not ours
+  }
 }
+export const readChanged = (payload: string): Changed | undefined => read(changed, payload);
+export const readLeased = (payload: string): z.infer<typeof lease> | undefined => read(lease, payload);
+export const readWritten = (payload: string): z.infer<typeof written> | undefined => read(written, payload);
 
 /** A notice's payload must stay below 8000 bytes. */
 const IDS_A_NOTICE = 600;

@@ -1,0 +1,78 @@
+import { mkdtemp, rm } from 'node:fs/promises';
+import { tmpdir } from 'node:os';
+import path from 'node:path';
+import pg from 'pg';
+import { copySeconds, writeNarrowFile } from './ingest/copy';
+import { measureLive } from './ingest/live';
+import { connectLogger } from './ingest/loggers';
+import { plantFleet } from './ingest/plant';
+import { framesMessage } from './ingest/readings';
+import { serve } from './ingest/server';
+
+/**
+ * What ingest can take: readings made durable through the WebSocket of one process, verdicts and events included,
+ * beside psql \copy of the same readings as narrow rows into a table without an index, in the same run. And how long
+ * a unit's change takes from the wire to a browser at 2,000 readings a second.
+ */
+const PORT = Number(process.env.BENCH_PORT ?? 4440);
+const SITES = 40;
+const STRINGS = 25;
+const UNITS = 20;
+const MINUTES = Number(process.env.BENCH_MINUTES ?? 120);
+const WINDOW = 4;
+
+const say = (text: string) => process.stderr.write(`${text}\n`);
+const figure = (name: string, value: number, unit: string, digits = 3) =>
+  process.stdout.write(`${name} ${value.toFixed(digits)} ${unit}\n`);
+
+const db = new pg.Client(process.env.DATABASE_URL);
+await db.connect();
+const folder = await mkdtemp(path.join(tmpdir(), 'wakeline-bench-'));
+try {
+  const plant = await plantFleet(db, SITES, STRINGS, UNITS);
+  const readings = SITES * STRINGS * UNITS * MINUTES;
+  const startS = Math.floor(Date.now() / 60_000) * 60 - 60 * (MINUTES + 5);
+  const day = (s: number) => new Date(s * 1000).toISOString().slice(0, 10);
+  await db.query('select ensure_days($1::date, $2::date)', [day(startS), day(Date.now() / 1000)]);
+  const file = path.join(folder, 'narrow.txt');
+  say(`writing ${readings} readings as rows`);
+  await writeNarrowFile(file, plant, MINUTES, startS);
+  const copies = [await copySeconds(db, file), await copySeconds(db, file)];
+
+  const server = await serve(PORT, 'ingest,web');
+  try {
+    const loggers = await Promise.all(plant.sites.map((s) => connectLogger(`ws://127.0.0.1:${PORT}`, s)));
+    say('making messages');
+    const messages = loggers.map((l, site) =>
+      Array.from({ length: MINUTES }, (_, m) => framesMessage(plant, site, m, startS + 60 * m, l.roster)),
+    );
+    await db.query('checkpoint');
+    say('sending');
+    const start = performance.now();
+    await Promise.all(loggers.map((l, i) => l.sendAll(messages[i]!, WINDOW)));
+    const seconds = (performance.now() - start) / 1000;
+    copies.push(await copySeconds(db, file));
+    const { rows } = await db.query<{ frames: number; judged: number; events: number; changes: number }>(
+      `select (select count(*) from string_frame)::int4 as frames,
+         (select count(*) from string_judgement where stuck > 0)::int4 as judged,
+         (select count(*) from event)::int4 as events, (select count(*) from unit_event)::int4 as changes`,
+    );
+    const got = rows[0]!;
+    if (got.frames !== SITES * STRINGS * MINUTES)
+      throw new Error(`${got.frames} frames are in the database instead of ${SITES * STRINGS * MINUTES}`);
+    if (got.changes === 0 || got.events === 0) throw new Error('no verdicts came with the readings');
+    const copyRate = readings / copies.sort((a, b) => a - b)[1]!;
+    figure('ingest.readings_per_s', readings / seconds, '1/s', 0);
+    figure('ingest.copy_rows_per_s', copyRate, '1/s', 0);
+    figure('ingest.unit_events', got.changes, 'rows', 0);
+    figure('ingest.events', got.events, 'rows', 0);
+    figure('ingest.ratio_to_copy', readings / seconds / copyRate, 'ratio');
+    for (const l of loggers) l.close();
+    await measureLive({ db, plant, port: PORT, say, figure });
+  } finally {
+    await server.stop();
+  }
+} finally {
+  await db.end();
+  await rm(folder, { recursive: true });
+}
