@@ -1,12 +1,15 @@
 import { defineConfig } from 'vitest/config';
 
 const noise = 'tests/setup/console.ts';
-const database = { globalSetup: ['tests/setup/database.ts'], testTimeout: 30_000, hookTimeout: 60_000 };
+const database = 'tests/setup/database.ts';
+const build = 'tests/setup/build.ts';
 
 export default defineConfig({
   test: {
     maxWorkers: 2,
     restoreMocks: true,
+    testTimeout: 60_000, // no test is about speed, and machines differ
+    hookTimeout: 120_000,
     projects: [
       {
         extends: true,
@@ -18,7 +21,13 @@ export default defineConfig({
       },
       {
         extends: true,
-        test: { name: 'architecture', include: ['tests/architecture/**/*.test.ts'], setupFiles: [noise] },
+        test: {
+          name: 'architecture',
+          include: ['tests/architecture/**/*.test.ts'],
+          isolate: false,
+          fileParallelism: false,
+          setupFiles: [noise],
+        },
       },
       {
         extends: true,
@@ -26,7 +35,7 @@ export default defineConfig({
           name: 'integration',
           include: ['tests/integration/**/*.test.ts'],
           setupFiles: [noise],
-          ...database,
+          globalSetup: [database],
         },
       },
       {
@@ -35,7 +44,7 @@ export default defineConfig({
           name: 'migrations',
           include: ['tests/migrations/**/*.test.ts'],
           setupFiles: [noise],
-          ...database,
+          globalSetup: [database],
         },
       },
       {
@@ -44,8 +53,7 @@ export default defineConfig({
           name: 'access',
           include: ['tests/access/**/*.test.ts'],
           setupFiles: [noise],
-          ...database,
-          globalSetup: ['tests/setup/database.ts', 'tests/setup/build.ts'],
+          globalSetup: [database, build],
         },
       },
       {
@@ -54,8 +62,7 @@ export default defineConfig({
           name: 'e2e',
           include: ['tests/e2e/**/*.test.ts'],
           setupFiles: [noise],
-          ...database,
-          globalSetup: ['tests/setup/database.ts', 'tests/setup/build.ts'],
+          globalSetup: [database, build],
           fileParallelism: false,
           testTimeout: 240_000,
           hookTimeout: 240_000,

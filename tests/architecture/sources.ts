@@ -94,12 +94,16 @@ export function stringsOf(file: string, text: string): string[] {
   return found;
 }
 
-export const sources = (): Source[] =>
+const read = (): Source[] =>
   SOURCE_FOLDERS.filter((folder) => fs.existsSync(path.join(ROOT, folder)))
     .flatMap(walk)
     .map((file) => {
       const text = fs.readFileSync(path.join(ROOT, file), 'utf8');
       return { file, text, imports: importsOf(file, text) };
     });
+
+let all: Source[] | undefined;
+/** Every source file, read once for all tests of this folder. */
+export const sources = (): Source[] => (all ??= read());
 
 export const isTest = (file: string): boolean => /\.test\.tsx?$/.test(file);

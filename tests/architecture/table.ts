@@ -74,7 +74,7 @@ export const TABLE: readonly Row[] = [
     folder: 'src/components',
     may: ['src/drawings', 'src/lib', 'src/schemas', 'src/domain'],
     packages: 'browser',
-    subfolders: ['ui', 'charts', 'shell', 'states', 'causes', 'events'],
+    subfolders: ['ui', 'charts', 'shell', 'states', 'causes', 'events', 'status', 'trace'],
   },
   { folder: 'src/features', may: [], packages: [], subfolders: FEATURES },
   ...FEATURES.map((name): Row => ({ folder: `src/features/${name}`, may: FEATURE, packages: 'browser' })),
