@@ -1,0 +1,43 @@
+import { z } from 'zod';
+
+const time = z.iso.datetime();
+
+/** How this installation runs, for a manager. */
+export const installationStatus = z.object({
+  at: time,
+  database: z.object({
+    version: z.string(),
+    bytes: z.int(),
+    /** False: all runs with one database account, so the second wall between organisations is missing. */
+    rowSecurity: z.boolean(),
+  }),
+  /** Processes that serve loggers now. */
+  processes: z.array(z.object({ name: z.string(), loggers: z.int(), until: time })),
+  loggers: z.array(
+    z.object({
+      siteId: z.uuid(),
+      siteName: z.string(),
+      timeZone: z.string(),
+      serial: z.string(),
+      firmware: z.string().nullable(),
+      connected: z.boolean(),
+      lastSpokeAt: time.nullable(),
+      lastAddress: z.string().nullable(),
+      refused: z.int(),
+      lastRefusal: z.object({ at: time.nullable(), field: z.string(), reason: z.string() }).nullable(),
+    }),
+  ),
+  work: z.object({
+    newestFrameAt: time.nullable(),
+    /** Oldest newest frame that has not been judged; null: all have. */
+    unjudgedSince: time.nullable(),
+    unjudgedStrings: z.int(),
+    /** Quarters before this instant are rolled up; null: none ever was. */
+    rolledUpTo: time.nullable(),
+    quartersWaiting: z.int(),
+    lateFrames: z.int(),
+    /** Last UTC day for which frames have a place. */
+    preparedTo: z.string().nullable(),
+  }),
+});
+export type InstallationStatus = z.infer<typeof installationStatus>;
