@@ -9,7 +9,7 @@ import { say, Stop } from './say.mjs';
 /**
  * A database ready to be worked on: the private cluster's, or the one that DATABASE_URL names.
  * @param {'demo' | 'test' | 'bench'} kind
- * @returns addresses, the demo's secret, `remember` (keeps a change of state) and `stop`
+ * @returns addresses, the demo's secret and `remember` (keeps a change of state)
  */
 export async function stageDatabase(kind) {
   const given = process.env.DATABASE_URL;
@@ -36,7 +36,7 @@ export async function stageDatabase(kind) {
   const remember = () =>
     writeState(home, { ...state, rolesSecret: password ? undefined : state.rolesSecret });
   remember();
-  return { home, state, url: given, own: false, hasDemo: true, remember, stop: () => Promise.resolve() };
+  return { home, state, url: given, own: false, hasDemo: true, remember };
 }
 
 /** Migrates and finds the addresses of the roles. */

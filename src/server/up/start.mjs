@@ -198,7 +198,6 @@ async function bringUpDemo(args, atEnd, { prepare = () => Promise.resolve(), lau
   await needPort('SIMULATOR_PORT', simulatorPort, '127.0.0.1');
 
   const stage = await stageDatabase('demo');
-  atEnd(stage.stop);
   const prepared = prepare(); // goes on while the demo is written: two cores are better than one
   prepared.catch(() => undefined);
   const addresses = await prepareDemo(stage, { fresh: args.includes('--fresh') });
