@@ -100,6 +100,9 @@ function Page({ page: initial, history }: Props) {
       <div className="grid gap-5 lg:grid-cols-[minmax(0,1fr)_minmax(280px,28%)]">
         <div className="flex min-w-0 flex-col gap-5">
           <StaircaseSheet page={page} />
+          <div className="lg:hidden">
+            <Caution strong={caution.strong}>{caution.rest}</Caution>
+          </div>
           <HistorySheet id={string.id} initial={history} today={page.at} />
           <TraceSheet siteId={site.id} stringId={string.id} timeZone={site.timeZone} />
         </div>
@@ -114,7 +117,9 @@ function Page({ page: initial, history }: Props) {
               </ol>
             </Sheet>
           )}
-          <Caution strong={caution.strong}>{caution.rest}</Caution>
+          <div className="hidden lg:block">
+            <Caution strong={caution.strong}>{caution.rest}</Caution>
+          </div>
           {page.lostToday && (
             <Sheet title="Lost here today" id="lost">
               <p className="text-[28px] font-semibold leading-8 tracking-[-0.02em]">

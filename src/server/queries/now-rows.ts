@@ -118,7 +118,8 @@ export async function nowRows(
                      from weather_state w join sensor s on s.id = w.sensor_id where w.site_id = site.id), '[]'),
          'said', coalesce((select json_agg(said) from said), '[]')) as site
        from site where site.id = :siteId),
-     placed as (
+     -- once, also where the planner has no statistics yet and would repeat it for every string
+     placed as materialized (
        select sl.string_id, array_agg(sl.position order by sl.position) as positions,
               array_agg(u.serial order by sl.position) as serials,
               array_agg(sl.roof_place order by sl.position) as roof_places,
