@@ -71,7 +71,7 @@ export function RollCallCurve({
           key={s}
           x={x(s)}
           y={plot.bottom + 20}
-          textAnchor={s === 0 ? 'start' : 'middle'}
+          textAnchor={s === 0 ? 'start' : x(s) > plot.right - 16 ? 'end' : 'middle'}
           fill={paint.ink2}
           {...FONT}
         >

@@ -62,6 +62,12 @@ describe('the staircase', () => {
     ).toBeNull();
   });
 
+  it('marks no gap for a shutdown on purpose, nor for the night', () => {
+    const down = string(14).map((s) => ({ ...s, state: 'shutdown' as const, voltage: 0.6 }));
+    expect(draw(down).gap).toBeNull();
+    expect(draw(string(14).map((s) => ({ ...s, state: 'dark' as const, voltage: null }))).gap).toBeNull();
+  });
+
   it('stays within its plot for any voltages', () => {
     fc.assert(
       fc.property(

@@ -49,6 +49,7 @@ export interface StaircaseGeometry {
   labels: ReadonlySet<number>;
 }
 
+const GRAVEST_FIRST: readonly Condition[] = ['not_shutting_down', 'stuck', 'silent', 'unheard', 'shutdown'];
 const TOLD_APART: ReadonlySet<Condition> = new Set([
   'stuck',
   'not_shutting_down',
@@ -89,7 +90,8 @@ function labelled(steps: readonly Step[], pitch: number): ReadonlySet<number> {
   const add = (position: number) => {
     if (chosen.every((c) => Math.abs(c - position) >= apart)) chosen.push(position);
   };
-  for (const s of steps) if (s.condition !== 'empty' && TOLD_APART.has(s.condition)) add(s.position);
+  for (const condition of GRAVEST_FIRST)
+    for (const s of steps) if (s.condition === condition) add(s.position);
   for (const s of steps) if (s.position === 1 || s.position % every === 0) add(s.position);
   return new Set(chosen);
 }
@@ -102,6 +104,11 @@ export function passingByTotal(
 ): number | null {
   if (!expectedVoltage || units === 0 || expectedVoltage / units < 5) return null;
   return Math.max(0, Math.min(units, Math.round((voltage / expectedVoltage) * units)));
+}
+
+function owesNothing(slot: DrawnSlot): boolean {
+  const condition = conditionOf(slot);
+  return rise(slot) === null || condition === 'shutdown' || condition === 'dark';
 }
 
 /** Where everything of a staircase lies, in px of a drawing `width` × `height`. Pure: screen, paper and mail share it. */
@@ -156,9 +163,9 @@ export function staircaseGeometry(input: StaircaseInput, width: number, height: 
   }
 
   const reached = untold ? input.voltage : level;
-  // what a silent or unheard unit gives is not known, so it is not missing either
-  const unknown = untold ? 0 : slots.reduce((sum, s) => sum + (rise(s) === null ? (s.expected ?? 0) : 0), 0);
-  const short = expectedTotal !== null && reached !== null ? expectedTotal - unknown - reached : 0;
+  // what a silent or unheard unit gives is not known, and one in shutdown on purpose or in the dark owes nothing
+  const notOwed = slots.reduce((sum, s) => sum + (!untold && owesNothing(s) ? (s.expected ?? 0) : 0), 0);
+  const short = expectedTotal !== null && reached !== null ? expectedTotal - notOwed - reached : 0;
   const gap =
     expectedTotal && reached !== null && short > expectedTotal * GAP_FROM
       ? { volts: short, yExpected: y(reached + short), yMeasured: y(reached) }
