@@ -35,8 +35,8 @@ const schema = z.object({
   LOG_LEVEL: z.enum(['silent', 'error', 'warn', 'info', 'debug']).default('info'),
   /** The plant's switches, where a simulator runs beside the demo; only named on the demo's pages. */
   SIMULATOR_URL: z.url().optional(),
-  /** Seconds after a unit's first report of the day before shutdown without a command counts as stuck. */
-  STUCK_GRACE_S: z.coerce.number().int().min(0).max(3600).default(120),
+  /** Seconds from a unit's first report of the day (or its release) until shutdown without a command counts as stuck. */
+  STUCK_GRACE_S: z.coerce.number().int().min(0).max(3600).optional(),
 });
 
 export type Config = Readonly<z.infer<typeof schema>>;

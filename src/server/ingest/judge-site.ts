@@ -12,6 +12,7 @@ import { UNCHANGED, type JudgeOutcome } from '../../domain/verdicts/evidence';
 import { judgeFrame, sweepString } from '../../domain/verdicts/judge';
 import type { JudgedFrame } from '../../domain/verdicts/observe';
 import { newMemory, resetSlot, type StringMemory } from '../../domain/verdicts/memory';
+import { config } from '../config';
 import type { KeptJudgement } from '../queries/judgement';
 import type { JudgedSite, JudgedString } from '../queries/judgement-contexts';
 
@@ -127,13 +128,15 @@ export class SiteJudge {
     const behaviour = site.behaviours.get(string.unitTypeId);
     if (!behaviour) throw new Error(`unit type ${string.unitTypeId} of string ${string.id} is missing`);
     const { timeLimitS, source } = timeLimitOf(site.ruleSet);
+    const { STUCK_GRACE_S } = config();
+    const times = judgementTimes(site.reportIntervalS, timeLimitS);
     const transmitters = string.transmitterIds.flatMap((id) => {
       const t = site.transmitters.get(id);
       return t ? [{ own: t.own, zone: site.zones.get(t.zoneId) ?? [] }] : [];
     });
     return {
       behaviour,
-      times: judgementTimes(site.reportIntervalS, timeLimitS),
+      times: STUCK_GRACE_S === undefined ? times : { ...times, graceS: STUCK_GRACE_S },
       timeLimitSource: source,
       slots: string.serials.map((serial) => serial !== null),
       heardAtS: string.heardAtS,
