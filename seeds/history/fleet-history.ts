@@ -4,7 +4,7 @@ import { known } from '../plant/rows';
 import type { SeededPlant } from '../plant/seeded';
 import { CopyInto, copyRows, WaitingRows } from './copy';
 import { writeDays } from './days';
-import { QUARTER_COLUMNS, QUARTER_S } from './quarters';
+import { QUARTER_COLUMNS } from './quarters';
 import {
   writeCommands,
   writeLastHeard,
@@ -39,7 +39,7 @@ export async function seedHistory(
     siteDays: new WaitingRows(),
   };
   const histories: SiteHistory[] = [];
-  const minutesFromS = Math.floor((fleet.since - MINUTES_S) / QUARTER_S) * QUARTER_S;
+  const minutesFromS = Math.floor((fleet.since - MINUTES_S) / 3600) * 3600;
   const untilS = Math.floor(fleet.since / 60) * 60;
 
   const frames = await CopyInto.open(tx, 'string_frame', FRAME_COLUMNS);
