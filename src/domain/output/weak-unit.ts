@@ -1,0 +1,126 @@
+import { median, sigmaMad } from './robust';
+
+/**
+ * Which unit of a string gives less voltage than its neighbours, and does it look like bypassed cells, a unit in
+ * shutdown, or shade? For units whose output is their module's voltage: an optimizing unit moves its output, so there
+ * the input side is what to hand in. Volts, amperes.
+ */
+
+export interface UnitVoltages {
+  /** Per unit in position order, per quarter of an hour; NaN: not reported. */
+  voltage: readonly Float64Array[];
+  /** String current per quarter: without load all modules stand at voc and bypassed cells still show. */
+  current: Float64Array;
+  /** Sub-strings of cells with a bypass diode, per module. */
+  bypassGroups: number;
+}
+
+export interface WeakUnit {
+  /** 0-based; position = unit + 1. */
+  unit: number;
+  kind: 'held' | 'bypassed_substring' | 'part_of_day' | 'low';
+  /** Bypassed sub-strings, where the kind counts. */
+  count: number | null;
+  /** Its voltage over the median of its neighbours'. */
+  ratio: number;
+  /** Share of the quarters in which it is so. */
+  share: number;
+  words: string;
+  threshold: { ratio: number; source: string };
+  confidence: number;
+  couldBe: string[];
+}
+
+const CURRENT_MIN = 1;
+const QUARTERS_MIN = 8;
+const UNITS_MIN = 4;
+/** Modified z of Iglewicz & Hoaglin 1993, as a factor on the robust standard deviation. */
+const DEVIATIONS = 3.5;
+const LOSS_MIN = 0.06;
+/** Less than this share of its neighbours' voltage: the unit passes none of its module's. */
+const HELD_BELOW = 0.08;
+/** Persistent: so, in this share of the quarters. */
+const MOSTLY = 0.7;
+const SOMETIMES = 0.15;
+
+/** Units that are weak, by position. Empty: none, or too few quarters under load to say (see `enoughToTell`). */
+export function weakUnits(input: UnitVoltages): WeakUnit[] {
+  const { voltage, current, bypassGroups } = input;
+  const quarters: number[] = [];
+  for (let q = 0; q < current.length; q++) if (current[q]! >= CURRENT_MIN) quarters.push(q);
+  if (voltage.length < UNITS_MIN || quarters.length < QUARTERS_MIN) return [];
+  const typical = quarters.map((q) => median(voltage.flatMap((v) => (Number.isNaN(v[q]!) ? [] : [v[q]!]))));
+  const ratios = voltage.map((v) =>
+    quarters.flatMap((q, k) => (Number.isNaN(v[q]!) || typical[k]! <= 0 ? [] : [v[q]! / typical[k]!])),
+  );
+  const middle = ratios.map((r) => (r.length === 0 ? 1 : median(r)));
+  const spread = Math.max(0.004, sigmaMad(middle));
+  const limit = 1 - Math.max(LOSS_MIN, DEVIATIONS * spread);
+  const group = 1 / bypassGroups;
+  const typicalV = median(typical);
+  const diode = 0.5 / Math.max(1, typicalV);
+  return ratios.flatMap((r, unit): WeakUnit[] => {
+    if (r.length < QUARTERS_MIN) return [];
+    const low = r.filter((x) => x < limit).length / r.length;
+    const ratio = middle[unit]!;
+    const made = (
+      kind: WeakUnit['kind'],
+      words: string,
+      confidence: number,
+      couldBe: string[],
+      count: number | null = null,
+    ): WeakUnit[] => [
+      {
+        unit,
+        kind,
+        count,
+        ratio,
+        share: low,
+        words,
+        threshold: {
+          ratio: limit,
+          source: '3.5 robust standard deviations (Iglewicz & Hoaglin 1993), at least 6 %',
+        },
+        confidence,
+        couldBe,
+      },
+    ];
+    if (low < SOMETIMES) return [];
+    if (low < MOSTLY)
+      return made('part_of_day', `Unit ${unit + 1} is low for part of the day`, 0.7, [
+        'shade from something near',
+        'a contact that comes and goes',
+      ]);
+    if (ratio < HELD_BELOW)
+      return made('held', `Unit ${unit + 1} passes nothing of its module's voltage`, 0.95, [
+        'in shutdown while released',
+        'its module is not mated',
+        'its module is dead or covered',
+      ]);
+    const missing = 1 - ratio;
+    const count = Math.round((missing - diode) / group);
+    const off = Math.abs(missing - diode - count * group);
+    const steady = sigmaMad(r) < group / 4;
+    if (count >= 1 && count < bypassGroups && off < group / 4 && steady)
+      return made(
+        'bypassed_substring',
+        `Unit ${unit + 1} gives ${bypassGroups - count} of ${bypassGroups} parts of its module's voltage: ${count === 1 ? 'one sub-string of cells is' : `${count} sub-strings of cells are`} bypassed`,
+        0.9,
+        ['a failed bypass diode', 'cracked cells', 'shade on one row of cells all day'],
+        count,
+      );
+    return made(
+      'low',
+      `Unit ${unit + 1} gives ${Math.round(100 * missing)} % less than its neighbours`,
+      0.7,
+      ['dirt or shade on its module', 'a module of another type', 'its measurement is off'],
+    );
+  });
+}
+
+/** Whether there is load and company enough for `weakUnits` to say anything at all. */
+export function enoughToTell(input: UnitVoltages): boolean {
+  let loaded = 0;
+  for (const i of input.current) if (i >= CURRENT_MIN) loaded++;
+  return input.voltage.length >= UNITS_MIN && loaded >= QUARTERS_MIN;
+}
