@@ -126,3 +126,16 @@ describe('the same plant twice', () => {
     }
   });
 });
+
+describe('a plant looked at for the first time', () => {
+  it('goes on where one that has run for hours stands: no jump between history and live', () => {
+    const running = plantOf('Weirside Clinic', SINCE - 7200);
+    for (let atS = SINCE - 7140; atS <= SINCE; atS += 60) running.step(atS);
+    const fresh = plantOf('Weirside Clinic', SINCE);
+    for (const [k, s] of running.strings.entries()) {
+      expect(fresh.strings[k]?.mode).toEqual(s.mode);
+      expect(Math.abs((fresh.strings[k]?.voltage ?? 0) / s.voltage - 1)).toBeLessThan(0.002);
+      expect(Math.abs((fresh.strings[k]?.current ?? 0) / s.current - 1)).toBeLessThan(0.01);
+    }
+  });
+});

@@ -22,6 +22,7 @@ export interface Seat {
 
 /** Seconds in which a roof's modules take two thirds of a step in temperature. */
 const WARM_UP_S = 420;
+const WARM_UP_STEP_S = 60;
 const DAY_S = 86_400;
 /** After a longer step units and inverters have got where they were going. */
 const LONG_STEP_S = 600;
@@ -174,7 +175,8 @@ export class SitePlant {
     }
     const elapsed = this.fresh ? Infinity : atS - this.atS;
     this.atS = atS;
-    this.shine(faults, elapsed);
+    if (this.fresh) this.warmUp(faults, atS);
+    this.shine(faults, this.fresh ? WARM_UP_STEP_S : elapsed);
     const changed: StringPlant[] = [];
     for (const s of this.strings) {
       const mine = this.known?.byString.get(s);
@@ -198,6 +200,15 @@ export class SitePlant {
       moveUnits(s, atS + 3600, this.commands, mine);
       s.pendingAtS.fill(NaN);
     }
+  }
+
+  /** The roof remembers the last half hour's sun: a site that is looked at for the first time has its warmth too. */
+  private warmUp(faults: readonly Fault[], atS: number): void {
+    for (let k = 5 * WARM_UP_S; k > 0; k -= WARM_UP_STEP_S) {
+      this.now = this.sky.at(atS - k);
+      this.shine(faults, this.cells.size === 0 ? Infinity : WARM_UP_STEP_S);
+    }
+    this.now = this.sky.at(atS);
   }
 
   private shine(faults: readonly Fault[], elapsed: number): void {
