@@ -1,12 +1,13 @@
 import { useMutation } from '@tanstack/react-query';
 import { useEffect, useRef } from 'react';
-import { clockOrDate, fullTime } from '../../drawings/times';
+import { fullTime } from '../../drawings/times';
 import { api, ApiError } from '../../lib/api';
 import { queryClient } from '../../lib/query-client';
 import type { Acknowledgement, AcknowledgeReply, SiteContact } from '../../schemas/api/fleet';
 import type { CauseNow } from '../../schemas/api/now';
 import { paths } from '../../schemas/paths';
 import { Button } from '../ui/Button';
+import { siteClock, useReaderZone } from '../ui/reader-zone';
 
 interface Props {
   cause: Pick<CauseNow, 'key' | 'siteId' | 'siteName'>;
@@ -24,6 +25,7 @@ const dialled = (phone: string): string => `tel:${phone.replace(/[^\d+]/g, '')}`
 export function Acknowledge({ cause, contact, taken, now, timeZone, onTaken }: Props) {
   const call = useRef<HTMLAnchorElement>(null);
   const asked = useRef(false);
+  const readerZone = useReaderZone();
   const mutation = useMutation(
     {
       mutationFn: () =>
@@ -62,7 +64,7 @@ export function Acknowledge({ cause, contact, taken, now, timeZone, onTaken }: P
       <p className="text-sm text-ink-2">
         <strong className="font-semibold text-ink">{taken.person}</strong> has it since{' '}
         <time dateTime={taken.at} title={fullTime(taken.at, timeZone)}>
-          {clockOrDate(taken.at, now, timeZone)}
+          {siteClock(taken.at, now, timeZone, readerZone)}
         </time>
         .
       </p>

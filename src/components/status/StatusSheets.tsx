@@ -126,9 +126,15 @@ export function StatusSheets({ status, timeZone }: { status: InstallationStatus;
             <div className={row}>
               <dt>Roll-ups</dt>
               <dd>
-                {rollUpLate(status) ? 'stand still; ' : ''}done up to{' '}
-                <When at={work.rolledUpTo} now={now} timeZone={timeZone} />; {number(work.quartersWaiting)}{' '}
-                quarters wait
+                {rollUpLate(status) && 'stand still; '}
+                {work.rolledUpTo ? (
+                  <>
+                    done up to <When at={work.rolledUpTo} now={now} timeZone={timeZone} />
+                  </>
+                ) : (
+                  'none done yet'
+                )}
+                ; {number(work.quartersWaiting)} quarters wait
               </dd>
             </div>
             <div className={row}>

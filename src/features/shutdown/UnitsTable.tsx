@@ -1,5 +1,6 @@
 import { Table, type Column } from '../../components/ui/Table';
-import { clockOrDate, fullTime } from '../../drawings/times';
+import { siteClock, useReaderZone } from '../../components/ui/reader-zone';
+import { fullTime } from '../../drawings/times';
 import type { CauseNow } from '../../schemas/api/now';
 import { paths } from '../../schemas/paths';
 
@@ -13,18 +14,22 @@ const byPlace = (a: Unit, b: Unit): number =>
 
 /** The units of one cause, in the order in which a person walks them. */
 export function UnitsTable({ cause, timeZone, now }: { cause: CauseNow; timeZone: string; now: string }) {
+  const readerZone = useReaderZone();
   const units = [...cause.units].sort(byPlace);
   const columns: Column<Unit>[] = [
     {
       key: 'string',
       label: 'String',
       cell: (unit) => (
-        <a
-          href={`${paths.string(cause.siteId, unit.stringId)}${unit.position === null ? '' : `#position-${unit.position}`}`}
-          className="target inline-flex min-w-[44px] items-center font-semibold hover:underline"
-        >
-          {unit.stringName}
-        </a>
+        <>
+          <a
+            href={`${paths.string(cause.siteId, unit.stringId)}${unit.position === null ? '' : `#position-${unit.position}`}`}
+            className="target inline-flex min-w-[44px] items-center font-semibold hover:underline"
+          >
+            {unit.stringName}
+          </a>
+          <span className="block text-xs text-ink-2 sm:hidden">{unit.serial ?? ''}</span>
+        </>
       ),
     },
     { key: 'position', label: 'Position', numeric: true, cell: (unit) => unit.position ?? 'unknown' },
@@ -35,7 +40,7 @@ export function UnitsTable({ cause, timeZone, now }: { cause: CauseNow; timeZone
       numeric: true,
       cell: (unit) => (
         <time dateTime={unit.since} title={fullTime(unit.since, timeZone)}>
-          {clockOrDate(unit.since, now, timeZone)}
+          {siteClock(unit.since, now, timeZone, readerZone)}
         </time>
       ),
     },
