@@ -14,6 +14,7 @@ import { ChartSketch } from './ChartSketch';
 import { ChartTable } from './ChartTable';
 import { toWall } from './local-time';
 import type { ChartModel } from './model';
+import { picture } from './picture';
 import { readout } from './options';
 
 const Canvas = lazy(() => import('./Canvas'));
@@ -127,18 +128,12 @@ export function TimeChart({ model, height = 300, csvHref, fileName, onZoom, cont
   const savePicture = () => {
     const instance = chart.current;
     if (!instance || instance.isDisposed()) return;
-    const link = document.createElement('a');
-    const ground = figure.current
-      ? getComputedStyle(figure.current).getPropertyValue('background-color')
-      : '#fff';
-    link.href = instance.getDataURL({
-      type: 'png',
-      pixelRatio: 2,
-      backgroundColor: ground,
-      excludeComponents: ['dataZoom'],
+    void picture(instance, model, figure.current).then((url) => {
+      const link = document.createElement('a');
+      link.href = url;
+      link.download = `${fileName}.png`;
+      link.click();
     });
-    link.download = `${fileName}.png`;
-    link.click();
   };
 
   return (

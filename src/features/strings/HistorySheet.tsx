@@ -35,6 +35,8 @@ function rangeInWords(history: StringHistory): string {
 
 interface Props {
   id: string;
+  /** Whose history: "Old Tannery Market Hall, string B3". */
+  subject: string;
   /** The day as the server drew it. */
   initial: StringHistory;
   /** The server's clock. */
@@ -42,7 +44,7 @@ interface Props {
 }
 
 /** The string's voltage over a day, week, month or year; zooming in fetches finer data. */
-export function HistorySheet({ id, initial, today: now }: Props) {
+export function HistorySheet({ id, subject, initial, today: now }: Props) {
   const [view, setView] = useState<HistoryView>({ range: 'day', on: null });
   const [part, setPart] = useState<Part | null>(null);
   const first = view.range === 'day' && view.on === null;
@@ -58,7 +60,7 @@ export function HistorySheet({ id, initial, today: now }: Props) {
     () => refined(history, part !== null && !finer.isPlaceholderData ? (finer.data ?? null) : null),
     [history, part, finer.data, finer.isPlaceholderData],
   );
-  const model = useMemo(() => historyChart(shown), [shown]);
+  const model = useMemo(() => historyChart(shown, subject), [shown, subject]);
   const { from, to } = history;
   const onZoom = useCallback(
     (span: Part | null) =>

@@ -103,7 +103,12 @@ function Page({ page: initial, history }: Props) {
           <div className="lg:hidden">
             <Caution strong={caution.strong}>{caution.rest}</Caution>
           </div>
-          <HistorySheet id={string.id} initial={history} today={page.at} />
+          <HistorySheet
+            id={string.id}
+            subject={`${site.name}, string ${string.name}`}
+            initial={history}
+            today={page.at}
+          />
           <TraceSheet siteId={site.id} stringId={string.id} timeZone={site.timeZone} />
         </div>
         <div className="flex min-w-0 flex-col gap-5">

@@ -26,6 +26,7 @@ interface Props {
 /** Every unit's line over today, the chosen ones in front. Fetched when asked for. */
 export function UnitsSheet({ page, chosen, onChoose }: Props) {
   const { string } = page;
+  const subject = `${page.site.name}, string ${string.name}`;
   const [open, setOpen] = useState(false);
   const [view, setView] = useState<UnitsView>({ quantity: 'voltage', on: null });
   const units = useQuery({ ...unitsQuery(string.id, view), enabled: open });
@@ -44,8 +45,8 @@ export function UnitsSheet({ page, chosen, onChoose }: Props) {
   );
   const inFront = useMemo(() => chosen ?? new Set(tones.keys()), [chosen, tones]);
   const model = useMemo(
-    () => (units.data ? unitsChart(units.data, inFront, tones) : null),
-    [units.data, inFront, tones],
+    () => (units.data ? unitsChart(units.data, subject, inFront, tones) : null),
+    [units.data, subject, inFront, tones],
   );
   const toggle = (position: number) => {
     const next = new Set(inFront);

@@ -2,10 +2,10 @@ import type { ChartModel } from '../../components/charts/model';
 import type { StringHistory, StringUnits } from '../../schemas/api/string';
 
 const TITLE = {
-  day: 'String voltage, one day',
-  week: 'String voltage, one week',
-  month: 'String voltage, one month',
-  year: 'String voltage, one year',
+  day: 'voltage over a day',
+  week: 'voltage over a week',
+  month: 'voltage over a month',
+  year: 'voltage over a year',
 } as const;
 
 /** Puts the finer part into the whole, in place of what the whole says of that time. */
@@ -60,10 +60,10 @@ function daylight({ from, to, nights }: Pick<StringHistory, 'from' | 'to' | 'nig
 }
 
 /** A string's history as a chart. */
-export function historyChart(history: StringHistory): ChartModel {
+export function historyChart(history: StringHistory, subject: string): ChartModel {
   const coarse = history.resolution !== 'minute';
   return {
-    title: TITLE[history.range],
+    title: `${subject}: ${TITLE[history.range]}`,
     unit: 'V',
     digits: 0,
     timeZone: history.timeZone,
@@ -84,21 +84,22 @@ export function historyChart(history: StringHistory): ChartModel {
 }
 
 const QUANTITY = {
-  voltage: 'Voltage',
-  current: 'Current',
-  temperature: 'Temperature',
-  power: 'Power',
+  voltage: 'voltage',
+  current: 'current',
+  temperature: 'temperature',
+  power: 'power',
 } as const;
 const DIGITS = { voltage: 1, current: 2, temperature: 0, power: 0 } as const;
 
 /** Units over a day as a chart: those chosen stand out, in the colour of their trouble if they have one. */
 export function unitsChart(
   units: StringUnits,
+  subject: string,
   chosen: ReadonlySet<number>,
   tones: ReadonlyMap<number, 'rust' | 'crimson'>,
 ): ChartModel {
   return {
-    title: `${QUANTITY[units.quantity]} of single units${units.quantity === 'voltage' && units.side === 'module' ? ', module side' : ''}`,
+    title: `${subject}: ${QUANTITY[units.quantity]} of single units${units.quantity === 'voltage' && units.side === 'module' ? ', module side' : ''}`,
     unit: units.unit,
     digits: DIGITS[units.quantity],
     timeZone: units.timeZone,
