@@ -98,7 +98,7 @@ export function TraceSheet({ siteId, stringId, timeZone }: Props) {
     >
       <p className="mb-3">{words}</p>
       <div className="hidden sm:block">
-        <TraceLines {...drawn} width={720} height={250} />
+        <TraceLines {...drawn} width={stringId ? 820 : 1280} height={260} />
       </div>
       <div className="sm:hidden">
         <TraceLines {...drawn} width={360} height={220} />

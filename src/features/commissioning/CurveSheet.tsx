@@ -32,7 +32,7 @@ export function CurveSheet({ page, tally, now, outlook }: Props) {
   const startS = new Date(run.startedAt).getTime() / 1000;
   const endS = (run.stoppedAt ? new Date(run.stoppedAt) : now).getTime() / 1000;
   const curve = curveOf(tally, startS);
-  const since = curve.points.map((p) => p.atS - startS);
+  const since = curve.points.map((p) => Math.max(0, p.atS - startS));
   const heardAtS = [...Array.from({ length: curve.before }, () => 0), ...since];
   const drawn = {
     total: tally.roster,

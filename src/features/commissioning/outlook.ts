@@ -15,7 +15,7 @@ const seconds = (iso: string): number => new Date(iso).getTime() / 1000;
  * answered before this start are left out of the pace: nobody timed them.
  */
 export function outlookOf(tally: RollTally, run: RollCallRun, now: Date): RollCallOutlook | null {
-  const startedAtS = seconds(run.startedAt);
+  const startedAtS = Math.floor(seconds(run.startedAt));
   const timed = tally.units.filter((u) => !u.answer || seconds(u.answer.at) >= startedAtS);
   const before = tally.units.length - timed.length;
   const numbers = new Map(tally.gateways.map((g, i) => [g.name, i]));

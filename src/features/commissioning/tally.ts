@@ -141,7 +141,10 @@ export function tallyOf(page: RollCallPage): RollTally {
   };
 }
 
-/** Cumulative answers of the roll over time, one point an answer, from `fromS` (epoch seconds) on. */
+/**
+ * Cumulative answers of the roll over time, one point an answer, from `fromS` (epoch seconds) on. Loggers tell whole
+ * seconds, so an answer in the second of the start belongs to it.
+ */
 export function curveOf(
   tally: RollTally,
   fromS: number,
@@ -149,7 +152,7 @@ export function curveOf(
   const times = tally.units
     .flatMap((u) => (u.answer ? [new Date(u.answer.at).getTime() / 1000] : []))
     .sort((a, b) => a - b);
-  const before = times.filter((t) => t < fromS).length;
+  const before = times.filter((t) => t < Math.floor(fromS)).length;
   const points = times.slice(before).map((atS, i) => ({ atS, heard: before + i + 1 }));
   return { before, points };
 }

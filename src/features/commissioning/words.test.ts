@@ -124,6 +124,8 @@ describe('the tally', () => {
   it('draws the curve from the start on, with what had answered before as its foot', () => {
     const from = new Date('2026-12-01T10:02:00Z').getTime() / 1000;
     expect(curveOf(tally, from)).toEqual({ before: 1, points: [{ atS: from + 120, heard: 2 }] });
+    // a start within the second of an answer that is told in whole seconds
+    expect(curveOf(tally, from - 60 + 0.7).before).toBe(0);
   });
 });
 
