@@ -126,7 +126,7 @@ function countExcluded(plane: PlaneSeries, s: StringSeries): OutputFinding['excl
   const counts = { clipped: 0, curtailed: 0, gridLost: 0, shutdown: 0, incomplete: 0 };
   for (let q = 0; q < s.excluded.length; q++) {
     const e = s.excluded[q]!;
-    if (e === 0 || plane.dayOf[q]! < 0) continue;
+    if (e === 0 || plane.dayOf[q]! < 0) continue; // nearly always
     for (const reason of REASONS) if (e & EXCLUDED[reason]) counts[reason]++;
   }
   return counts;

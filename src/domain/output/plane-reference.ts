@@ -50,9 +50,10 @@ export interface PlaneReference {
   method: 'siblings' | 'model';
   /** Expected specific power, W per W, per step: median of the siblings, or the model. NaN: none. */
   specific: Float64Array;
-  /** Median voltage a module, V, and median current over rated current's scale (A per W of powerRef). */
-  voltagePerModule: Float64Array;
-  currentPerWatt: Float64Array;
+  /** Median voltage a module, V, at a step; NaN: nobody reports. Worked out when asked: only low strings ask. */
+  voltagePerModule: (step: number) => number;
+  /** Median current, A per W of one module's power: strings of more modules carry the same current. */
+  currentPerWatt: (step: number) => number;
   /** Per string and day: made over expected; NaN: the day doesn't count. */
   ratio: Float64Array[];
   /** Wh expected and made in the quarters used. */
@@ -67,36 +68,29 @@ export interface PlaneReference {
 /** Worked out once for a plane; `judgeOutput` then takes one string after the other. */
 export function planeReference(plane: PlaneSeries): PlaneReference {
   const steps = plane.dayOf.length;
-  const method = plane.strings.length >= SIBLINGS_MIN ? 'siblings' : 'model';
+  const { strings } = plane;
+  const method = strings.length >= SIBLINGS_MIN ? 'siblings' : 'model';
   const specific = new Float64Array(steps).fill(NaN);
-  const voltagePerModule = new Float64Array(steps).fill(NaN);
-  const currentPerWatt = new Float64Array(steps).fill(NaN);
-  for (let q = 0; q < steps; q++) {
-    if (plane.dayOf[q]! < 0) continue;
-    const powers: number[] = [];
-    const volts: number[] = [];
-    const amps: number[] = [];
-    for (const s of plane.strings) {
-      if (s.excluded[q] !== 0) continue;
-      const p = s.power[q]!;
-      if (!Number.isNaN(p)) powers.push(p / s.powerRef);
-      const v = s.voltage[q]!;
-      if (!Number.isNaN(v)) volts.push(v / s.units);
-      const i = s.current[q]!;
-      // strings of more modules have the same current: per watt of one module
-      if (!Number.isNaN(i)) amps.push((i * s.units) / s.powerRef);
-    }
-    if (volts.length > 0) voltagePerModule[q] = median(volts);
-    if (amps.length > 0) currentPerWatt[q] = median(amps);
-    if (method === 'siblings') {
-      if (powers.length >= 3) specific[q] = median(powers);
-    } else {
-      const poa = plane.poaGlobal[q]!;
+  const sorted = new Float64Array(strings.length);
+  const perPower = strings.map((s) => 1 / s.powerRef);
+  const perUnit = strings.map((s) => 1 / s.units);
+  const perCurrent = strings.map((s) => s.units / s.powerRef);
+  const power = strings.map((s) => s.power);
+  const voltage = strings.map((s) => s.voltage);
+  const current = strings.map((s) => s.current);
+  const excluded = strings.map((s) => s.excluded);
+  if (method === 'siblings') {
+    for (let q = 0; q < steps; q++)
+      if (plane.dayOf[q]! >= 0) specific[q] = middleAt(power, perPower, excluded, q, 3, sorted);
+  } else
+    for (let q = 0; q < steps; q++) {
+      if (plane.dayOf[q]! < 0) continue;
       const cell = plane.temperatureCell[q]!;
       const warm = Number.isNaN(cell) ? 1 : 1 + plane.gammaPmp * (cell - 25);
-      specific[q] = (poa / 1000) * warm;
+      specific[q] = (plane.poaGlobal[q]! / 1000) * warm;
     }
-  }
+  const voltagePerModule = (q: number): number => middleAt(voltage, perUnit, excluded, q, 1, sorted);
+  const currentPerWatt = (q: number): number => middleAt(current, perCurrent, excluded, q, 1, sorted);
   const perString = plane.strings.map((s) => dayRatios(plane, s, specific));
   const z = plane.strings.map(() => new Float64Array(plane.days).fill(NaN));
   const all: number[] = [];
@@ -120,6 +114,30 @@ export function planeReference(plane: PlaneSeries): PlaneReference {
     z,
     spread: all.length === 0 ? NaN : 1.4826 * median(all.map(Math.abs)),
   };
+}
+
+/** Median over the strings' values at step `q`, each times its scale; NaN where fewer than `least` count. */
+function middleAt(
+  columns: readonly Float64Array[],
+  scale: readonly number[],
+  excluded: readonly Uint8Array[],
+  q: number,
+  least: number,
+  sorted: Float64Array,
+): number {
+  let n = 0;
+  for (let i = 0; i < columns.length; i++) {
+    const x = columns[i]![q]! * scale[i]!;
+    if (Number.isNaN(x) || excluded[i]![q] !== 0) continue;
+    let k = n++;
+    while (k > 0 && sorted[k - 1]! > x) {
+      sorted[k] = sorted[k - 1]!;
+      k--;
+    }
+    sorted[k] = x;
+  }
+  if (n < least) return NaN;
+  return n % 2 === 1 ? sorted[(n - 1) / 2]! : (sorted[n / 2 - 1]! + sorted[n / 2]!) / 2;
 }
 
 function dayRatios(

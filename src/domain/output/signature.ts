@@ -61,9 +61,9 @@ export function signatureOf(
     bins.set(bin, b);
     if (e < BRIGHT) continue;
     powers.push(p);
-    const v = s.voltage[q]! / s.units / reference.voltagePerModule[q]!;
+    const v = s.voltage[q]! / s.units / reference.voltagePerModule(q);
     if (Number.isFinite(v)) volts.push(v);
-    const i = (s.current[q]! * s.units) / s.powerRef / reference.currentPerWatt[q]!;
+    const i = (s.current[q]! * s.units) / s.powerRef / reference.currentPerWatt(q);
     if (Number.isFinite(i)) amps.push(i);
   }
   const alone = s.scope === 'string';
