@@ -163,12 +163,18 @@ describe('what serves units', () => {
 
   it('a stopped transmitter shuts its strings down, and says so', () => {
     const plant = plantOf(STORE);
-    plant.faults.add({ kind: 'transmitter_off', transmitter: 'T2' }, plant.atS);
+    const { id } = plant.faults.add({ kind: 'transmitter_off', transmitter: 'T2' }, plant.atS);
     run(plant, 20);
     expect(modesOf(plant, 'B1').every((m) => m === 'shutdown')).toBe(true);
     expect(modesOf(plant, 'A1').every((m) => m === 'passing')).toBe(true);
     expect(plant.commands.transmitters.get('T2')?.inForce).toBe('keep_alive_lost');
     expect(plant.commands.zones.get('Whole roof')?.inForce).toBe('released');
+    plant.faults.clear(id, plant.atS + 1);
+    run(plant, 2);
+    expect(plant.commands.transmitters.get('T2')).toMatchObject({
+      inForce: 'released',
+      since: plant.atS - 1,
+    });
   });
 
   it('cross-talk keeps a string passing when its own transmitter stops', () => {

@@ -64,7 +64,9 @@ export class Commands {
       const zone = this.zones.get(t.zone);
       const stopped = off.some((f) => f.transmitter === t.name);
       const inForce = stopped ? 'keep_alive_lost' : (zone?.inForce ?? 'released');
-      const since = stopped || !zone ? atS : zone.since;
+      // Running again after a stop of its own, it runs from now, not since its zone was released.
+      const known = this.transmitters.get(t.name)?.since ?? 0;
+      const since = !stopped && zone && zone.since > known ? zone.since : atS;
       this.put(this.transmitters, t.name, inForce, since, stopped ? t.name : (zone?.by ?? t.name));
     }
     return this.version !== before;
