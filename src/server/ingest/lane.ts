@@ -64,10 +64,11 @@ export class Lane {
   }
 
   private async run(): Promise<void> {
+    let following: Promise<void> = Promise.resolve();
     while (this.queue.length > 0) {
       const batch = takeBatch(this.queue);
       const written = await this.writeUntilDone(batch);
-      if (!written) return;
+      if (!written) break;
       let readings = 0;
       for (const item of batch.finished) {
         readings += item.readings;
@@ -75,11 +76,20 @@ export class Lane {
         else item.refused(item.fault);
       }
       this.hooks.relieved(readings);
-      try {
-        await this.hooks.written(batch, written);
-      } catch (error) {
-        log.error({ error }, 'what follows a written batch failed');
-      }
+      // judging and telling go on while the next batch is written, but in the order of the batches
+      await following;
+      following = this.follow(batch, written);
+      // what came while the last batch was followed up is taken before this ends
+      if (this.queue.length === 0) await following;
+    }
+    await following;
+  }
+
+  private async follow(batch: Batch, written: Written): Promise<void> {
+    try {
+      await this.hooks.written(batch, written);
+    } catch (error) {
+      log.error({ error }, 'what follows a written batch failed');
     }
   }
 

@@ -8,6 +8,11 @@ import { sitesNow } from '../queries/sites-now';
 import { causesNow } from '../services/causes';
 import { eventItemsOf, serialsHeard, type Subject } from './topics';
 
+/**
+ * What changed, read once and shared by everybody who listens to it. In two kinds of round: news (strings, events,
+ * units heard) go out at once; overviews (site lines, inverters, gateways, causes) are dearer and may wait a moment.
+ */
+
 /** One subscription as a round sees it. */
 export interface Listening {
   subject: Subject;
@@ -15,10 +20,6 @@ export interface Listening {
   cursor: string;
   /** The causes that were sent last, as text. */
   causes: string;
-}
-export interface Dirty {
-  sites: ReadonlySet<number>;
-  strings: ReadonlySet<number>;
 }
 export interface Delta<L extends Listening> {
   to: L;
@@ -31,50 +32,30 @@ const EVENTS_A_ROUND = 2000;
 const isBelow = (a: string, b: string): boolean => BigInt(a) < BigInt(b);
 const atSite = (l: Listening): number | null => (l.subject.kind === 'fleet' ? null : l.subject.siteId);
 
-/** What changed at one site, read once and shared by everybody who listens to it. */
-type SiteParts = Pick<Change, 'strings' | 'site' | 'inverters' | 'gateways' | 'causes'> & { open: boolean };
-
-/** What changed over the fleet. */
-interface FleetParts {
-  sites: SiteNow[];
-  causes: CauseNow[];
-}
-
-/**
- * Reads what changed, once for all, and gives each listener its part: every listener gets a delta, an empty one
- * where nothing concerns it. `fleetDirty`: sites whose line in the fleet is to be sent; it may lag behind `dirty`.
- */
-export async function readRound<L extends Listening>(
+/** Strings, events and units heard. Every listener gets a delta, an empty one where nothing concerns it. */
+export async function readNews<L extends Listening>(
   listening: readonly L[],
-  dirty: Dirty,
-  fleetDirty: ReadonlySet<number>,
+  strings: ReadonlySet<number>,
 ): Promise<Delta<L>[]> {
-  if (listening.length === 0) return [];
   return asIngest(async (tx) => {
     const at = new Date();
     const to = await horizon(tx);
     const events = await missedEvents(tx, listening, to);
-    const bySite = await changedStrings(tx, dirty);
-    const parts = new Map<number, SiteParts>();
-    for (const siteId of new Set(listening.map(atSite)))
-      if (siteId !== null && (bySite.has(siteId) || dirty.sites.has(siteId)))
-        parts.set(
-          siteId,
-          await readSite(tx, at, siteId, bySite.get(siteId) ?? [], {
-            whole: dirty.sites.has(siteId),
-            here: listening.filter((l) => atSite(l) === siteId),
-          }),
-        );
-    const fleet = await readFleet(tx, at, listening, fleetDirty);
+    const changed = await changedStrings(tx, at, listening, strings);
     const deltas: Delta<L>[] = [];
     for (const l of listening) {
-      const news = events.filter((e) => !isBelow(e.xid, l.cursor));
-      const change = await changeFor(tx, l, news, parts, fleet);
+      const mine = events.filter((e) => concerns(e, l.subject) && !isBelow(e.xid, l.cursor));
+      const change = await newsFor(tx, l.subject, mine, changed);
       deltas.push({ to: l, cursor: isBelow(l.cursor, to) ? to : l.cursor, change });
     }
     return deltas;
   });
 }
+
+const concerns = (event: LiveEvent, subject: Subject): boolean =>
+  subject.kind !== 'fleet' &&
+  event.siteNumber === subject.siteId &&
+  (subject.kind !== 'string' || event.stringNumber === subject.stringId);
 
 async function missedEvents(tx: Tx, listening: readonly Listening[], to: string): Promise<LiveEvent[]> {
   const siteIds = new Set(listening.flatMap((l) => atSite(l) ?? []));
@@ -83,95 +64,131 @@ async function missedEvents(tx: Tx, listening: readonly Listening[], to: string)
   return eventsBetween(tx, from, to, { siteIds: [...siteIds] }, EVENTS_A_ROUND);
 }
 
-async function changedStrings(tx: Tx, dirty: Dirty): Promise<Map<number, number[]>> {
+/** The changed strings that somebody watches, by site. */
+async function changedStrings(
+  tx: Tx,
+  at: Date,
+  listening: readonly Listening[],
+  strings: ReadonlySet<number>,
+): Promise<Map<number, Change['strings']>> {
+  const found = new Map<number, Change['strings']>();
+  if (strings.size === 0) return found;
+  const whole = new Set<number>();
+  const watched = new Set<number>();
+  for (const { subject } of listening)
+    if (subject.kind === 'string') watched.add(subject.stringId);
+    else if (subject.kind !== 'fleet') whole.add(subject.siteId);
   const bySite = new Map<number, number[]>();
-  if (dirty.strings.size === 0) return bySite;
-  for (const [stringId, siteId] of await siteByString(tx, [...dirty.strings])) {
-    const list = bySite.get(siteId);
-    if (list) list.push(stringId);
-    else bySite.set(siteId, [stringId]);
+  for (const [stringId, siteId] of await siteByString(tx, [...strings]))
+    if (whole.has(siteId) || watched.has(stringId))
+      bySite.set(siteId, [...(bySite.get(siteId) ?? []), stringId]);
+  for (const [siteId, stringIds] of bySite) found.set(siteId, await stringsNow(tx, at, { stringIds }));
+  return found;
+}
+
+async function newsFor(
+  tx: Tx,
+  subject: Subject,
+  events: readonly LiveEvent[],
+  changed: ReadonlyMap<number, Change['strings']>,
+): Promise<Change> {
+  const change: Change = {};
+  if (subject.kind === 'fleet') return change;
+  const here = changed.get(subject.siteId);
+  const strings = subject.kind === 'string' ? here?.filter((s) => s.id === subject.ref) : here;
+  if (strings && strings.length > 0) change.strings = strings;
+  if (subject.kind !== 'roll-call') {
+    if (events.length > 0) change.events = eventItemsOf(events);
+    return change;
   }
-  return bySite;
+  const serials = serialsHeard(events);
+  if (serials.length > 0) change.heard = await answersOf(tx, subject.siteId, serials);
+  if (events.some((e) => e.kind === 'roll_call_stopped' || e.kind === 'roll_call_started'))
+    change.rollCallStopped = !(await rollCallOpen(tx, subject.siteId));
+  return change;
+}
+
+type SiteParts = Pick<Change, 'site' | 'inverters' | 'gateways' | 'causes'>;
+
+/** Site lines, inverters, gateways and causes of the sites that changed, for those whom they concern. */
+export async function readOverviews<L extends Listening>(
+  listening: readonly L[],
+  sites: ReadonlySet<number>,
+): Promise<Delta<L>[]> {
+  return asIngest(async (tx) => {
+    const at = new Date();
+    const parts = new Map<number, SiteParts>();
+    for (const siteId of sites) {
+      const here = listening.filter((l) => atSite(l) === siteId).map((l) => l.subject.kind);
+      if (here.length > 0) parts.set(siteId, await readSite(tx, at, siteId, here));
+    }
+    const fleet = await readFleet(tx, at, listening, sites);
+    return listening.map((l) => ({ to: l, cursor: l.cursor, change: overviewFor(l, parts, fleet) }));
+  });
 }
 
 async function readSite(
   tx: Tx,
   at: Date,
   siteId: number,
-  strings: readonly number[],
-  { whole, here }: { whole: boolean; here: readonly Listening[] },
+  kinds: readonly Subject['kind'][],
 ): Promise<SiteParts> {
-  const page = here.some((l) => l.subject.kind === 'site');
-  const all = page || here.some((l) => l.subject.kind === 'roll-call');
-  const watched = new Set(here.flatMap((l) => (l.subject.kind === 'string' ? [l.subject.stringId] : [])));
-  const read = all ? strings : strings.filter((id) => watched.has(id));
-  const [site] = page ? await sitesNow(tx, at, [siteId]) : [];
+  const page = kinds.includes('site');
+  if (!page && !kinds.includes('string')) return {};
+  const inverters = await invertersNow(tx, at, siteId);
+  if (!page) return { inverters };
+  const [site] = await sitesNow(tx, at, [siteId]);
   return {
-    strings: read.length > 0 ? await stringsNow(tx, at, { stringIds: read }) : [],
+    inverters,
     ...(site && { site }),
-    ...(whole && (page || watched.size > 0) && { inverters: await invertersNow(tx, at, siteId) }),
-    ...(whole && page && { gateways: await gatewaysNow(tx, at, siteId) }),
-    ...(whole && page && { causes: await causesNow(tx, at, [siteId]) }),
-    open: await rollCallOpen(tx, siteId),
+    gateways: await gatewaysNow(tx, at, siteId),
+    causes: await causesNow(tx, at, [siteId]),
   };
 }
 
+interface FleetParts {
+  sites: SiteNow[];
+  causes: CauseNow[];
+}
 async function readFleet(
   tx: Tx,
   at: Date,
   listening: readonly Listening[],
-  dirty: ReadonlySet<number>,
+  changed: ReadonlySet<number>,
 ): Promise<FleetParts | null> {
   const visible = new Set(
     listening.flatMap((l) => (l.subject.kind === 'fleet' ? [...l.subject.siteIds] : [])),
   );
-  const changed = [...dirty].filter((id) => visible.has(id));
-  if (changed.length === 0) return null;
-  return { sites: await sitesNow(tx, at, changed), causes: await causesNow(tx, at, [...visible]) };
+  const wanted = [...changed].filter((id) => visible.has(id));
+  if (wanted.length === 0) return null;
+  return { sites: await sitesNow(tx, at, wanted), causes: await causesNow(tx, at, [...visible]) };
 }
 
-async function changeFor(
-  tx: Tx,
+function overviewFor(
   listener: Listening,
-  events: readonly LiveEvent[],
   parts: ReadonlyMap<number, SiteParts>,
   fleet: FleetParts | null,
-): Promise<Change> {
+): Change {
   const { subject } = listener;
-  if (subject.kind === 'fleet') return fleet ? fleetChange(listener, subject.refs, fleet) : {};
-  const here = events.filter(
-    (e) =>
-      e.siteNumber === subject.siteId && (subject.kind !== 'string' || e.stringNumber === subject.stringId),
-  );
-  const of = parts.get(subject.siteId);
   const change: Change = {};
-  const strings = subject.kind === 'string' ? of?.strings?.filter((s) => s.id === subject.ref) : of?.strings;
-  if (strings && strings.length > 0) change.strings = strings;
-  if (subject.kind === 'roll-call') {
-    const serials = serialsHeard(here);
-    if (serials.length > 0) change.heard = await answersOf(tx, subject.siteId, serials);
-    if (here.some((e) => e.kind === 'roll_call_stopped' || e.kind === 'roll_call_started'))
-      change.rollCallStopped = !(of?.open ?? (await rollCallOpen(tx, subject.siteId)));
+  if (subject.kind === 'fleet') {
+    const sites = fleet?.sites.filter((s) => subject.refs.has(s.id)) ?? [];
+    if (sites.length > 0) change.sites = sites;
+    if (fleet)
+      takeCauses(
+        listener,
+        fleet.causes.filter((c) => subject.refs.has(c.siteId)),
+        change,
+      );
     return change;
   }
-  if (here.length > 0) change.events = eventItemsOf(here);
-  if (of?.inverters) change.inverters = of.inverters;
+  const of = parts.get(subject.siteId);
+  if (!of || subject.kind === 'roll-call') return change;
+  if (of.inverters) change.inverters = of.inverters;
   if (subject.kind === 'string') return change;
-  if (of?.site) change.site = of.site;
-  if (of?.gateways) change.gateways = of.gateways;
-  if (of?.causes) takeCauses(listener, of.causes, change);
-  return change;
-}
-
-function fleetChange(listener: Listening, refs: ReadonlySet<string>, fleet: FleetParts): Change {
-  const change: Change = {};
-  const sites = fleet.sites.filter((s) => refs.has(s.id));
-  if (sites.length > 0) change.sites = sites;
-  takeCauses(
-    listener,
-    fleet.causes.filter((c) => refs.has(c.siteId)),
-    change,
-  );
+  if (of.site) change.site = of.site;
+  if (of.gateways) change.gateways = of.gateways;
+  if (of.causes) takeCauses(listener, of.causes, change);
   return change;
 }
 

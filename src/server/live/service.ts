@@ -7,12 +7,13 @@ import { log } from '../log';
 import { CHANNELS, readChanged } from '../queries/live-notices';
 import { Connection, type Subscription } from './connection';
 import { Listener } from './listener';
-import { readRound } from './round';
+import { Repeated } from './repeated';
+import { readNews, readOverviews, type Delta } from './round';
 
 /** After a wake-up so long is waited for more to come with it. */
 const GATHER_MS = 20;
-/** A line of the fleet is sent at most so often. */
-const FLEET_EVERY_MS = 500;
+/** Site lines, inverters and causes are sent at most so often. */
+const OVERVIEW_EVERY_MS = 500;
 /** Every listener hears something this often, if only that the connection stands; it also makes lost wake-ups good. */
 const HEARTBEAT_MS = 15_000;
 const SESSIONS_EVERY_MS = 60_000;
@@ -24,11 +25,8 @@ export class LiveHub {
   private readonly joining = new Set<{ sites: Set<number>; strings: Set<number> }>();
   private sites = new Set<number>();
   private strings = new Set<number>();
-  private fleetSites = new Set<number>();
-  private fleetAt = 0;
-  private running: Promise<void> | undefined;
-  private gather: NodeJS.Timeout | undefined;
-  private fleetTimer: NodeJS.Timeout | undefined;
+  private readonly news = new Repeated(GATHER_MS, GATHER_MS, () => this.sendNews());
+  private readonly overviews = new Repeated(GATHER_MS, OVERVIEW_EVERY_MS, () => this.sendOverviews());
   private beat: NodeJS.Timeout | undefined;
   private sessionTimer: NodeJS.Timeout | undefined;
   private everything = false;
@@ -56,11 +54,9 @@ export class LiveHub {
     this.stopping = true;
     clearInterval(this.beat);
     clearInterval(this.sessionTimer);
-    clearTimeout(this.gather);
-    clearTimeout(this.fleetTimer);
     for (const { ws } of this.connections) ws.close(1001, 'the server is going away');
     await this.listener.stop();
-    await this.running;
+    await Promise.all([this.news.stop(), this.overviews.stop()]);
     for (const { ws } of this.connections) ws.terminate();
   }
 
@@ -94,64 +90,63 @@ export class LiveHub {
 
   private notice(channel: string, payload: string): void {
     if (this.connections.size === 0) return;
-    if (channel === CHANNELS.changed) {
-      const changed = readChanged(payload);
-      for (const id of changed?.sites ?? []) this.sites.add(id);
-      for (const id of changed?.strings ?? []) this.strings.add(id);
-    } else this.sites.add(Number(payload));
+    const changed =
+      channel === CHANNELS.changed ? readChanged(payload) : { sites: [Number(payload)], strings: [] };
+    for (const id of changed?.sites ?? []) this.sites.add(id);
+    for (const id of changed?.strings ?? []) this.strings.add(id);
     this.wake();
   }
 
   private wake(): void {
-    if (this.running || this.stopping) return;
-    this.gather ??= setTimeout(() => {
-      this.gather = undefined;
-      this.running = this.round().finally(() => {
-        this.running = undefined;
-        if (this.sites.size + this.strings.size > 0) this.wake();
-      });
-    }, GATHER_MS);
+    if (this.stopping) return;
+    this.news.soon();
+    if (this.sites.size > 0) this.overviews.soon();
   }
 
-  private async round(): Promise<void> {
-    const dirty = { sites: this.sites, strings: this.strings };
-    const { everything } = this;
-    this.sites = new Set();
+  private listening(): Subscription[] {
+    const all: Subscription[] = [];
+    for (const connection of this.connections) all.push(...connection.topics.values());
+    return all;
+  }
+
+  private async sendNews(): Promise<void> {
+    const { strings, everything } = this;
     this.strings = new Set();
     this.everything = false;
-    for (const id of dirty.sites) this.fleetSites.add(id);
-    for (const missed of this.joining) {
-      for (const id of dirty.sites) missed.sites.add(id);
-      for (const id of dirty.strings) missed.strings.add(id);
-    }
-    const listening: Subscription[] = [];
-    for (const connection of this.connections) listening.push(...connection.topics.values());
+    for (const missed of this.joining) for (const id of strings) missed.strings.add(id);
+    const listening = this.listening();
     if (listening.length === 0) return;
-    const fleetDue = Date.now() - this.fleetAt >= FLEET_EVERY_MS;
-    const fleetDirty = fleetDue ? this.fleetSites : new Set<number>();
-    if (fleetDue) {
-      this.fleetSites = new Set();
-      this.fleetAt = Date.now();
-    } else if (this.fleetSites.size > 0)
-      this.fleetTimer ??= setTimeout(() => {
-        this.fleetTimer = undefined;
-        this.wake();
-      }, FLEET_EVERY_MS);
     try {
-      for (const { to, cursor, change } of await readRound(listening, dirty, fleetDirty)) {
-        // unsubscribed, or subscribed anew, while we read
-        if (to.connection.topics.get(to.topic) !== to) continue;
-        to.cursor = cursor;
-        if (everything || Object.keys(change).length > 0)
-          to.connection.send({ type: 'delta', topic: to.topic, cursor, change });
-      }
+      this.send(await readNews(listening, strings), everything);
     } catch (error) {
-      if (!isDatabaseAway(error)) log.error({ error }, 'a round of live changes failed');
       // nothing was sent: the next round tells it
-      for (const id of dirty.sites) this.sites.add(id);
-      for (const id of dirty.strings) this.strings.add(id);
-      for (const id of fleetDirty) this.fleetSites.add(id);
-      await new Promise((resolve) => setTimeout(resolve, 500));
+      for (const id of strings) this.strings.add(id);
+      this.everything ||= everything;
+      throw error;
+    }
+  }
+
+  private async sendOverviews(): Promise<void> {
+    const { sites } = this;
+    this.sites = new Set();
+    for (const missed of this.joining) for (const id of sites) missed.sites.add(id);
+    const listening = this.listening();
+    if (listening.length === 0) return;
+    try {
+      this.send(await readOverviews(listening, sites), false);
+    } catch (error) {
+      for (const id of sites) this.sites.add(id);
+      throw error;
+    }
+  }
+
+  private send(deltas: readonly Delta<Subscription>[], everything: boolean): void {
+    for (const { to, cursor, change } of deltas) {
+      // unsubscribed, or subscribed anew, while we read
+      if (to.connection.topics.get(to.topic) !== to) continue;
+      if (BigInt(cursor) > BigInt(to.cursor)) to.cursor = cursor;
+      if (everything || Object.keys(change).length > 0)
+        to.connection.send({ type: 'delta', topic: to.topic, cursor: to.cursor, change });
     }
   }
 
@@ -166,7 +161,8 @@ export class LiveHub {
     }
   }
 
-  private async checkSessions(): Promise<void> {
+  /** Asks again who everybody is; ends the connections of those who are nobody any more. */
+  async checkSessions(): Promise<void> {
     for (const connection of [...this.connections]) {
       try {
         const found = await actorOfCookie(connection.cookie);

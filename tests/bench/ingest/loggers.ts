@@ -52,11 +52,14 @@ export async function connectLogger(
       new Promise((resolve, reject) => {
         let next = 0;
         let acked = 0;
-        ws.once('close', () => reject(new Error('the connection was closed')));
+        const lost = () => reject(new Error('the connection was closed'));
+        ws.once('close', lost);
         onAck = () => {
           acked++;
           if (next < messages.length) ws.send(messages[next++]!);
-          if (acked === messages.length) resolve();
+          if (acked < messages.length) return;
+          ws.off('close', lost);
+          resolve();
         };
         while (next < Math.min(window, messages.length)) ws.send(messages[next++]!);
       }),
