@@ -84,7 +84,7 @@ export function sitePage(simulator: Simulator, key: string): string {
   if (!run) throw new Error(`There is no site "${key}".`);
   const { plan } = run;
   const select = (name: string, label: string, values: readonly (string | number)[]) =>
-    `<label data-field="${name}">${label}<select name="${name}">${values.map((v) => `<option value="${text(v)}">${text(v)}</option>`).join('')}</select></label>`;
+    `<label data-field="${name}">${label}<select name="${name}">${values.map((v) => `<option value="${text(v)}">${text(String(v).replaceAll('_', ' '))}</option>`).join('')}</select></label>`;
   const input = (name: string, label: string, value: string, hint = '') =>
     `<label data-field="${name}">${label}<input name="${name}" value="${text(value)}"${hint ? ` placeholder="${text(hint)}"` : ''}></label>`;
   const strings = plan.strings.map((s) => s.name);

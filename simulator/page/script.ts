@@ -8,6 +8,8 @@ const call = async (path, method, body) => {
   if (!reply.ok) throw new Error((answer.field ? answer.field + ': ' : '') + answer.title);
   return answer;
 };
+const WORDS = { at: 'from the', otherString: 'and string', otherPosition: 'position', fromHour: 'from hour', toHour: 'to hour', claims: 'says', how: '', keeps: 'keeps what it hears:' };
+const say = (v) => v === 'next_release' ? 'next release on' : v === 'now' ? 'start' : Array.isArray(v) ? v.join(' ') : String(v).replaceAll('_', ' ');
 const base = '/api/sites/' + encodeURIComponent(site || '');
 const element = (tag, className, content) => { const e = document.createElement(tag); if (className) e.className = className; e.textContent = content; return e; };
 
@@ -29,7 +31,7 @@ function showFaults(truth) {
     const { kind, ...where } = f.fault;
     const li = document.createElement('li');
     const words = document.querySelector('option[value="' + kind + '"]');
-    li.append(element('span', '', (words ? words.textContent : kind) + ' · ' + Object.entries(where).map(([k, v]) => k + ' ' + v).join(', ')));
+    li.append(element('span', '', (words ? words.textContent : kind) + ' · ' + Object.entries(where).map(([k, v]) => WORDS[k] === undefined ? k + ' ' + say(v) : (WORDS[k] + ' ' + say(v)).trim()).join(', ')));
     const button = element('button', '', 'Clear');
     button.type = 'button';
     button.dataset.clear = f.id;

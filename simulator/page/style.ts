@@ -14,7 +14,7 @@ table { border-collapse: collapse; width: 100%; }
 caption { text-align: left; color: var(--ink-2); padding-bottom: 8px; }
 th, td { text-align: left; padding: 6px 12px 6px 0; border-top: 1px solid var(--rule); vertical-align: middle; white-space: nowrap; }
 thead th { border-top: 0; font-weight: 500; color: var(--ink-2); }
-.n { text-align: right; }
+.n { text-align: right; padding-right: 24px; }
 .quiet { color: var(--ink-2); }
 .switches { list-style: none; margin: 0; padding: 0; }
 .switches li { display: flex; flex-wrap: wrap; gap: 12px; align-items: center; padding: 8px 0; border-top: 1px solid var(--rule); }
