@@ -1,7 +1,9 @@
+/** Backslashes and control characters, which browsers read as something else than they are. */
+const isTreacherous = (text: string): boolean => [...text].some((c) => c === '\\' || c < ' ');
+
 /** Where sign-in leads: a path of our own, never an address elsewhere. */
 export function returnPath(wanted: string | undefined, fallback: string): string {
-  if (!wanted || !wanted.startsWith('/') || wanted.startsWith('//') || /[\\\u0000-\u001f]/.test(wanted))
-    return fallback;
+  if (!wanted || !wanted.startsWith('/') || wanted.startsWith('//') || isTreacherous(wanted)) return fallback;
   const base = 'http://own.invalid';
   const url = new URL(wanted, base);
   return url.origin === base && !url.pathname.startsWith('/api/') && !url.pathname.startsWith('//')

@@ -51,7 +51,7 @@ function make(kept: boolean) {
 }
 let both: { kept: Lucia; brief: Lucia } | undefined;
 const lucias = () => {
-  const made = (both ??= { kept: make(true) as Lucia, brief: make(false) as Lucia });
+  const made = (both ??= { kept: make(true), brief: make(false) });
   return [made.kept, made.brief] as const;
 };
 

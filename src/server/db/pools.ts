@@ -63,8 +63,8 @@ export async function connect(purpose: Purpose): Promise<pg.Client> {
 }
 
 export async function closePools(): Promise<void> {
-  const open = [...Object.values(pools.knex).map((k) => k.destroy()), pools.signIn?.end()];
+  const { knex, signIn } = pools;
   pools.knex = {};
   pools.signIn = undefined;
-  await Promise.all(open);
+  await Promise.all([...Object.values(knex).map((k) => k.destroy()), signIn?.end() ?? Promise.resolve()]);
 }
