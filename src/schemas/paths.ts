@@ -10,6 +10,8 @@ export const paths = {
   customer: (site: string) => `/my-site/${site}`,
   customerHome: () => '/my-site',
   status: () => '/status',
+  tryReading: () => '/try-a-reading',
+  methods: () => '/methods',
   api: {
     signIn: () => '/api/sign-in',
     signOut: () => '/api/sign-out',

@@ -33,6 +33,8 @@ export const ROUTES: readonly Route[] = [
   get('index.astro', 'fleet.read', 'nothing', () => '/'),
   get('shutdown.astro', 'shutdown.read', 'nothing', () => '/shutdown'),
   get('status.astro', 'status.read', 'nothing', () => '/status'),
+  get('try-a-reading.astro', 'reading.try', 'nothing', () => '/try-a-reading'),
+  get('methods.astro', 'methods.read', 'nothing', () => '/methods'),
   get('commissioning/index.astro', 'roll_call.read', 'nothing', () => '/commissioning'),
   get(
     'commissioning/[site]/roll-call.astro',

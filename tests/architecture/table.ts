@@ -20,6 +20,8 @@ export const FEATURES = [
   'equipment',
   'people',
   'customer',
+  'readings',
+  'methods',
 ] as const;
 const AREAS = FEATURES.map((name) => `src/features/${name}`);
 

@@ -7,12 +7,21 @@ interface Props<T extends string> {
   options: readonly Option<T>[];
   value: T;
   onChange: (value: T) => void;
+  /** Field that a form sends where no script runs; otherwise the label keeps the group together. */
+  name?: string;
   /** quiet: words in a row, for a chart's head. bold: boxes, for a form on a roof. */
   look?: 'quiet' | 'bold';
 }
 
 /** One of a few, all in sight. Arrow keys move, as in any group of radio buttons. */
-export function Segmented<T extends string>({ label, options, value, onChange, look = 'quiet' }: Props<T>) {
+export function Segmented<T extends string>({
+  label,
+  options,
+  value,
+  onChange,
+  name = label,
+  look = 'quiet',
+}: Props<T>) {
   return (
     <fieldset className="flex flex-wrap gap-1">
       <legend className="sr-only">{label}</legend>
@@ -27,7 +36,7 @@ export function Segmented<T extends string>({ label, options, value, onChange, l
           >
             <input
               type="radio"
-              name={label}
+              name={name}
               value={option.value}
               checked={chosen}
               onChange={() => onChange(option.value)}

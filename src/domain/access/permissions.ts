@@ -17,6 +17,8 @@ export const PERMISSIONS = {
   'roll_call.run': ['manager', 'technician'],
   'customer_page.read': ROLES,
   'status.read': ['manager'],
+  'reading.try': STAFF,
+  'methods.read': ROLES,
 } as const satisfies Record<string, readonly Role[]>;
 
 export type Permission = keyof typeof PERMISSIONS;

@@ -1,0 +1,108 @@
+import type { Interpretation } from '../../domain/readings/interpret';
+import type { ReadingQuestion } from '../../domain/readings/reading';
+import { Sheet } from '../../components/ui/Sheet';
+import { Tag, type Tone } from '../../components/ui/Tag';
+import { PAINT } from './paint';
+import type { Faults } from './form';
+import { chance, helpWords, hueOf, initiatorWords, outcomeWords, reasoning, shownHypotheses } from './words';
+
+interface Props {
+  answer: Interpretation | null;
+  question: ReadingQuestion | null;
+  waiting: boolean;
+  faults: Faults;
+}
+
+/** What the reading means: explanations with their chances, what they rest on, what helped. */
+export function AnswerSheet({ answer, question, waiting, faults }: Props) {
+  if (!answer || !question)
+    return (
+      <Sheet id="answer">
+        <h2 className="text-[15px] font-semibold">
+          {waiting ? 'Type what the meter shows between + and −' : 'Something has to be put right first'}
+        </h2>
+        {waiting ? (
+          <p className="mt-1 text-ink-2">
+            What it can mean is worked out at once, here in the browser. A negative reading is a finding, not
+            a mistake.
+          </p>
+        ) : (
+          <ul className="mt-1 list-disc pl-5 text-rust-ink">
+            {Object.entries(faults).map(([key, fault]) => (
+              <li key={key}>{fault}</li>
+            ))}
+          </ul>
+        )}
+      </Sheet>
+    );
+  const shown = shownHypotheses(answer);
+  const best = shown[0];
+  return (
+    <Sheet id="answer">
+      <h2 className="mb-3 flex flex-wrap items-center gap-2">
+        <span className="sr-only">What it means: </span>
+        <Tag tone={toneOf(answer, question)}>{outcomeWords(answer)}</Tag>
+      </h2>
+      <p role="status" className="sr-only">
+        {`${outcomeWords(answer)}. ${best ? `${best.words}, ${chance(best.probability)}` : ''}`}
+      </p>
+      <ol className="space-y-3">
+        {shown.map((h) => (
+          <li key={`${h.kind} ${h.count}`}>
+            <div className="flex items-start justify-between gap-3">
+              <span className="text-[15px] font-semibold leading-5 tracking-[-0.01em]">{h.words}</span>
+              <span className="shrink-0 text-[15px]">{chance(h.probability)}</span>
+            </div>
+            <div aria-hidden="true" className="mt-1.5 h-[6px] rounded-full bg-rule-faint">
+              <div
+                className={`h-full min-w-[3px] rounded-full ${PAINT[hueOf(h, question)].bar}`}
+                style={{ width: `${(100 * h.probability).toFixed(2)}%` }}
+              />
+            </div>
+            {h.asExpected && h !== best && (
+              <p className="mt-0.5 text-sm text-ink-2">This is what was expected.</p>
+            )}
+          </li>
+        ))}
+      </ol>
+      <p className="mt-4 text-[15px] leading-[21px] text-ink-2">{reasoning(answer, question).join(' ')}</p>
+      {answer.earth && (
+        <div className="mt-4 border-t border-rule-faint pt-3">
+          <h3 className="font-semibold">Readings to earth</h3>
+          <p className={answer.earth.outcome === 'fault' ? 'font-medium text-rust-ink' : 'text-ink-2'}>
+            {answer.earth.words}{' '}
+            {answer.earth.outcome === 'no_fault_seen'
+              ? ''
+              : `Chance of a fault to earth: ${chance(answer.earth.probability)}.`}
+          </p>
+        </div>
+      )}
+      <div className="mt-4 border-t border-rule-faint pt-3">
+        <h3 className="font-semibold">Does it follow the initiator?</h3>
+        <p className="text-ink-2">{initiatorWords(answer, question)}</p>
+      </div>
+      {answer.helped.length > 0 && (
+        <div className="mt-3 border-t border-rule-faint pt-3">
+          <h3 className="font-semibold">What helped</h3>
+          <ul className="text-ink-2">
+            {answer.helped.map((help) => {
+              const { name, words } = helpWords(help);
+              return (
+                <li key={help.what}>
+                  <span className="text-ink">{name}</span>: {words}.
+                </li>
+              );
+            })}
+          </ul>
+        </div>
+      )}
+    </Sheet>
+  );
+}
+
+function toneOf(answer: Interpretation, question: ReadingQuestion): Tone {
+  const best = answer.hypotheses[0];
+  if (!best || answer.outcome === 'proves_nothing') return 'slate';
+  if (answer.outcome === 'cant_tell') return 'outline';
+  return hueOf(best, question);
+}

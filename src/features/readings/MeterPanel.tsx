@@ -1,0 +1,138 @@
+import { useState } from 'react';
+import { Field } from '../../components/ui/Field';
+import { Segmented } from '../../components/ui/Segmented';
+import { NumberPad } from './NumberPad';
+import type { PanelProps } from './StringPanel';
+import { COMMANDED, FIELD_AT, LIGHTS, METERS, PLACES, chosen, pressed, type Place } from './form';
+import { LIGHT_LABELS, METER_LABELS, PLACE_LABELS, commandedLabels } from './words';
+
+/** Circumstances and the number itself, big enough for sun and gloves. */
+export function MeterPanel({ form, faults, place, typed, choose }: PanelProps & { place: Place }) {
+  const field = FIELD_AT[place];
+  const text = form[field] ?? '';
+  const fault = faults[field];
+  const [pad, setPad] = useState(text === '');
+  const key = (name: string) => typed({ [field]: pressed(text, name) });
+  const commanded = commandedLabels(form.kind);
+  const tells = form.kind !== 'shutdown_only';
+  return (
+    <div className="space-y-2">
+      <Segmented
+        look="bold"
+        name="at"
+        label="Kind of reading"
+        value={place}
+        options={PLACES.map((value) => ({ value, label: PLACE_LABELS[value] }))}
+        onChange={(at) => choose({ at })}
+      />
+      <div className="flex flex-wrap gap-x-5 gap-y-2">
+        <Segmented
+          look="bold"
+          name="commanded"
+          label={tells ? 'What is commanded' : 'Keep-alive'}
+          value={chosen(COMMANDED, form.commanded, 'unknown')}
+          options={COMMANDED.map((value) => ({ value, label: commanded[value] }))}
+          onChange={(value) => choose({ commanded: value })}
+        />
+        <Segmented
+          look="bold"
+          name="light"
+          label="Light on the modules"
+          value={chosen(LIGHTS, form.light, 'bright')}
+          options={LIGHTS.map((value) => ({ value, label: LIGHT_LABELS[value] }))}
+          onChange={(light) => choose({ light })}
+        />
+        <Segmented
+          look="bold"
+          name="meter"
+          label="Meter input"
+          value={chosen(METERS, form.meter, 'high_impedance')}
+          options={METERS.map((value) => ({ value, label: METER_LABELS[value] }))}
+          onChange={(meter) => choose({ meter })}
+        />
+      </div>
+      {tells && (
+        <Field
+          label="Units that have answered the roll call"
+          name="heard"
+          inputMode="numeric"
+          autoComplete="off"
+          className="max-w-[320px] pt-1"
+          value={form.heard}
+          error={faults.heard}
+          hint="A unit that nothing has spoken to yet passes its module's full voltage."
+          onChange={(event) => typed({ heard: event.target.value })}
+        />
+      )}
+      <div className="flex items-end gap-2 border-b-[3px] border-ink pb-1.5 pt-2">
+        <button
+          type="button"
+          aria-label="Change the sign"
+          onClick={() => key('sign')}
+          className="h-12 w-12 shrink-0 rounded border border-rule bg-sheet text-2xl"
+        >
+          ±
+        </button>
+        <button
+          type="button"
+          aria-label="Number pad"
+          aria-expanded={pad}
+          onClick={() => setPad(!pad)}
+          className="h-12 w-12 shrink-0 rounded border border-rule bg-sheet lg:hidden"
+        >
+          <PadMark />
+        </button>
+        <label htmlFor="reading-volts" className="sr-only">
+          {`Reading ${PLACE_LABELS[place]}, volts`}
+        </label>
+        <input
+          id="reading-volts"
+          name={field}
+          value={text}
+          inputMode="decimal"
+          autoComplete="off"
+          maxLength={20}
+          placeholder="0.0"
+          aria-invalid={fault ? true : undefined}
+          aria-describedby={fault ? 'reading-volts-error' : undefined}
+          onChange={(event) => typed({ [field]: event.target.value })}
+          className={`w-full min-w-0 bg-transparent text-right text-[56px] font-semibold leading-[60px] tracking-[-0.03em] placeholder:text-rule ${fault ? 'text-rust-ink' : 'text-ink'}`}
+        />
+        <span aria-hidden="true" className="pb-1.5 text-[26px] leading-8 text-ink-2">
+          V
+        </span>
+      </div>
+      {PLACES.filter((other) => other !== place).map((other) => (
+        <input key={other} type="hidden" name={FIELD_AT[other]} value={form[FIELD_AT[other]]} />
+      ))}
+      {fault && (
+        <p id="reading-volts-error" role="alert" className="font-medium text-rust-ink">
+          {fault}
+        </p>
+      )}
+      {(form.pe !== '' || form.ne !== '' || place !== 'between') && (
+        <dl className="flex flex-wrap gap-x-4 text-sm text-ink-2">
+          {PLACES.map((item) => (
+            <div key={item} className="flex gap-1">
+              <dt>{PLACE_LABELS[item]}</dt>
+              <dd className={faults[FIELD_AT[item]] ? 'text-rust-ink' : 'text-ink'}>
+                {form[FIELD_AT[item]] ? `${form[FIELD_AT[item]]}\u00a0V` : '–'}
+              </dd>
+            </div>
+          ))}
+        </dl>
+      )}
+      {pad && <NumberPad onKey={key} onDone={() => setPad(false)} />}
+    </div>
+  );
+}
+
+function PadMark() {
+  return (
+    <svg viewBox="0 0 20 20" width="20" height="20" aria-hidden="true" className="mx-auto fill-current">
+      {[3, 9, 15].flatMap((y) =>
+        [3, 9, 15].map((x) => <rect key={`${x} ${y}`} x={x - 1} y={y - 1} width="3" height="3" />),
+      )}
+    </svg>
+  );
+}

@@ -1,0 +1,71 @@
+const DIGITS = ['1', '2', '3', '4', '5', '6', '7', '8', '9'] as const;
+const KEY = 'min-h-[48px] rounded border border-rule bg-sheet text-[20px] font-medium active:bg-petrol-wash';
+
+interface Props {
+  onKey: (key: string) => void;
+  onDone: () => void;
+}
+
+/** Numbers under one thumb; hidden where there is a keyboard. */
+export function NumberPad({ onKey, onDone }: Props) {
+  return (
+    <div role="group" aria-label="Number pad" data-pad className="grid grid-cols-4 gap-1.5 pt-1 lg:hidden">
+      <noscript>
+        <style>{'[data-pad]{display:none}'}</style>
+      </noscript>
+      {DIGITS.map((digit, i) => (
+        <button
+          key={digit}
+          type="button"
+          className={KEY}
+          style={{ gridColumn: (i % 3) + 1, gridRow: Math.floor(i / 3) + 1 }}
+          onClick={() => onKey(digit)}
+        >
+          {digit}
+        </button>
+      ))}
+      <button
+        type="button"
+        className={KEY}
+        style={{ gridColumn: 1, gridRow: 4 }}
+        onClick={() => onKey('.')}
+        aria-label="Decimal point"
+      >
+        .
+      </button>
+      <button
+        type="button"
+        className={KEY}
+        style={{ gridColumn: '2 / 4', gridRow: 4 }}
+        onClick={() => onKey('0')}
+      >
+        0
+      </button>
+      <button
+        type="button"
+        className={KEY}
+        style={{ gridColumn: 4, gridRow: 1 }}
+        onClick={() => onKey('back')}
+        aria-label="Delete the last digit"
+      >
+        ⌫
+      </button>
+      <button
+        type="button"
+        className={`${KEY} !text-[15px]`}
+        style={{ gridColumn: 4, gridRow: '2 / 4' }}
+        onClick={() => onKey('clear')}
+      >
+        Clear
+      </button>
+      <button
+        type="button"
+        className={`${KEY} !border-ink !bg-ink !text-[15px] text-sheet`}
+        style={{ gridColumn: 4, gridRow: 4 }}
+        onClick={onDone}
+      >
+        Done
+      </button>
+    </div>
+  );
+}

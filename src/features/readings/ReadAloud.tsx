@@ -1,0 +1,64 @@
+import { useEffect, useState, useSyncExternalStore } from 'react';
+import { Button } from '../../components/ui/Button';
+
+/** What the device can do does not change; the server has neither. */
+const never = () => () => undefined;
+const cannot = () => false;
+const canSpeak = () => 'speechSynthesis' in window;
+const canCopy = () => 'clipboard' in navigator;
+
+/** Reads the answer and its cautions, where the device has a voice; copies the address, where it may. */
+export function ReadAloud({ text }: { text: string }) {
+  const speaks = useSyncExternalStore(never, canSpeak, cannot);
+  const copies = useSyncExternalStore(never, canCopy, cannot);
+  const [speaking, setSpeaking] = useState(false);
+  const [note, setNote] = useState('');
+  useEffect(
+    () => () => {
+      if ('speechSynthesis' in window) window.speechSynthesis.cancel();
+    },
+    [text],
+  );
+  if (!speaks && !copies) return null;
+
+  const speak = () => {
+    window.speechSynthesis.cancel();
+    if (speaking) {
+      setSpeaking(false);
+      return;
+    }
+    const words = new SpeechSynthesisUtterance(text);
+    words.lang = 'en-GB';
+    words.onend = () => setSpeaking(false);
+    words.onerror = () => {
+      setSpeaking(false);
+      setNote('This device has no voice for it.');
+    };
+    setNote('');
+    setSpeaking(true);
+    window.speechSynthesis.speak(words);
+  };
+  const copy = () => {
+    navigator.clipboard.writeText(window.location.href).then(
+      () => setNote('The link is copied.'),
+      () => setNote('The browser does not let us copy: take the address from its bar.'),
+    );
+  };
+  return (
+    <div className="no-print flex flex-wrap items-center gap-2">
+      {speaks && (
+        <Button onClick={speak} aria-pressed={speaking} className="min-h-[44px] flex-1 sm:flex-none">
+          {speaking ? 'Stop reading' : 'Read it aloud'}
+        </Button>
+      )}
+      {copies && (
+        <Button onClick={copy} className="min-h-[44px] flex-1 sm:flex-none">
+          Copy the link
+        </Button>
+      )}
+      <p role="status" className="text-sm text-ink-2">
+        {note}
+      </p>
+    </div>
+  );
+}

@@ -1,0 +1,110 @@
+import { useState, type ReactNode } from 'react';
+import { UNIT_KINDS } from '../../domain/equipment/unit-type';
+import { Field } from '../../components/ui/Field';
+import { Segmented } from '../../components/ui/Segmented';
+import { RANGES, chosen, type Faults, type ReadingForm } from './form';
+import { SHEETS, SHEET_KEYS } from './sheets';
+import { KIND_LABELS, stringWords } from './words';
+
+export interface PanelProps {
+  form: ReadingForm;
+  faults: Faults;
+  typed: (some: Partial<ReadingForm>) => void;
+  choose: (some: Partial<ReadingForm>) => void;
+}
+const OWN_FIELDS = [
+  { key: 'voc', label: 'Open-circuit voltage at STC', unit: 'V' },
+  { key: 'beta', label: 'Its change with temperature', unit: '%/K' },
+  { key: 'cells', label: 'Cells in series', unit: '' },
+  { key: 'groups', label: 'Bypass diodes', unit: '' },
+] as const;
+
+/** Which string: kind of unit, how many, which module. Folded away once it is right. */
+export function StringPanel({ form, faults, typed, choose }: PanelProps) {
+  // only at first: a field that is put right must not fold away under the hand
+  const [wrong] = useState(['units', ...OWN_FIELDS.map((f) => f.key)].some((key) => faults[key]));
+  const own = form.module === 'own';
+  return (
+    <details className="group mb-3 border-b border-t border-rule" open={wrong}>
+      <summary className="flex min-h-[44px] cursor-pointer list-none items-center justify-between gap-3 py-1.5">
+        <span className="min-w-0 font-medium">{stringWords(form)}</span>
+        <span className="shrink-0 text-sm text-petrol underline underline-offset-[3px]">
+          <span className="group-open:hidden">Change</span>
+          <span className="hidden group-open:inline">Fold</span>
+        </span>
+      </summary>
+      <div className="space-y-4 pb-4 pt-2">
+        <Labelled label="Kind of unit">
+          <Segmented
+            look="bold"
+            name="kind"
+            label="Kind of unit"
+            value={chosen(UNIT_KINDS, form.kind, 'shutdown_only')}
+            options={UNIT_KINDS.map((value) => ({ value, label: KIND_LABELS[value] }))}
+            onChange={(kind) => choose({ kind })}
+          />
+        </Labelled>
+        <Field
+          label="Units in the string"
+          name="units"
+          inputMode="numeric"
+          autoComplete="off"
+          value={form.units}
+          error={faults.units}
+          onChange={(event) => typed({ units: event.target.value })}
+        />
+        <div>
+          <label htmlFor="reading-module" className="mb-1 block font-medium">
+            Module
+          </label>
+          <select
+            id="reading-module"
+            name="module"
+            value={form.module}
+            onChange={(event) => choose({ module: event.target.value })}
+            className="min-h-[44px] w-full rounded border border-rule bg-sheet px-3 text-[16px] text-ink"
+          >
+            {SHEET_KEYS.map((key) => (
+              <option key={key} value={key}>
+                {`Typical, ${SHEETS[key].name} (${SHEETS[key].vocRef} V)`}
+              </option>
+            ))}
+            <option value="own">Own values, from its datasheet</option>
+          </select>
+          <p className="mt-1 text-sm text-ink-2">
+            Open-circuit voltage and cells decide; a like sheet is near enough.
+          </p>
+        </div>
+        {own && (
+          <div className="grid grid-cols-2 gap-3">
+            {OWN_FIELDS.map(({ key, label, unit }) => (
+              <Field
+                key={key}
+                label={label}
+                name={key}
+                unit={unit || undefined}
+                inputMode={key === 'beta' ? 'text' : 'decimal'}
+                autoComplete="off"
+                placeholder={key === 'beta' ? '−0.27' : String(RANGES[key].min)}
+                value={form[key]}
+                error={faults[key]}
+                onChange={(event) => typed({ [key]: event.target.value })}
+              />
+            ))}
+          </div>
+        )}
+      </div>
+    </details>
+  );
+}
+
+export function Labelled({ label, children }: { label: string; children: ReactNode }) {
+  return (
+    <div>
+      <p aria-hidden="true" className="mb-1 font-medium">
+        {label}
+      </p>
+      {children}
+    </div>
+  );
+}

@@ -1,0 +1,190 @@
+import { UNIT_KINDS } from '../../domain/equipment/unit-type';
+import type { Help, Interpretation, RankedHypothesis } from '../../domain/readings/interpret';
+import { expectedState, type ReadingQuestion } from '../../domain/readings/reading';
+import { counted, number, percent, volts } from '../../drawings/numbers';
+import { chosen, type Place, type ReadingForm } from './form';
+import { SHEET_KEYS, SHEETS } from './sheets';
+
+/** An answer in plain words: what a person on a roof reads or is read. */
+
+export const KIND_LABELS = {
+  shutdown_only: 'Shutdown-only',
+  monitored: 'Monitored',
+  optimizing: 'Optimizing',
+} as const;
+export const LIGHT_LABELS = { bright: 'bright', dull: 'dull', snow: 'snow', night: 'night' } as const;
+export const METER_LABELS = { high_impedance: 'ordinary input', low_impedance: 'low impedance' } as const;
+export const PLACE_LABELS = { between: '+ to −', positive: '+ to earth', negative: '− to earth' } as const;
+
+/** What commands the units, by kind: shutdown-only units know only the keep-alive. */
+export function commandedLabels(kind: string): Record<'shutdown' | 'released' | 'unknown', string> {
+  return kind === 'shutdown_only'
+    ? { shutdown: 'keep-alive off', released: 'on', unknown: 'not known' }
+    : { shutdown: 'in shutdown', released: 'released', unknown: 'nobody has said' };
+}
+
+/** "14 units, shutdown-only, 108 half cells, about 410 W" */
+export function stringWords(form: ReadingForm): string {
+  const kind = KIND_LABELS[chosen(UNIT_KINDS, form.kind, 'shutdown_only')].toLowerCase();
+  const sheet = SHEET_KEYS.find((key) => key === form.module);
+  const units = form.units.trim();
+  const count = /^\d+$/.test(units) ? counted(Number(units), 'unit') : `${units || '?'} units`;
+  return `${count}, ${kind}; module of ${sheet ? SHEETS[sheet].name : 'own values'}`;
+}
+
+export const HOW_TO_MEASURE: Record<Place, string> = {
+  between: 'Open circuit, string isolated, positive to negative.',
+  positive: 'Open circuit, string isolated, positive to earth. Wait until it settles.',
+  negative: 'Open circuit, string isolated, negative to earth. Wait until it settles.',
+};
+
+/** The tag over the answer. */
+export function outcomeWords(answer: Interpretation): string {
+  switch (answer.outcome) {
+    case 'as_expected':
+      return 'As expected';
+    case 'proves_nothing':
+      return 'Proves nothing';
+    case 'finding':
+      return 'Not as expected';
+    case 'cant_tell': {
+      const fit = answer.likely.filter((h) => h.kind !== 'unexplained').length;
+      return fit === 2 ? "Can't tell: two explanations fit" : "Can't tell: several explanations fit";
+    }
+  }
+}
+
+export type Hue = 'petrol' | 'plum' | 'rust' | 'crimson' | 'slate';
+/** Colour by what an explanation says of the units; crimson only where they pass though they should not. */
+export function hueOf(h: RankedHypothesis, question: ReadingQuestion): Hue {
+  const passes =
+    h.kind === 'all_passing' ||
+    h.kind === 'some_passing' ||
+    (h.kind === 'wired_past_its_unit' && expectedState(question).passing < question.units);
+  if (passes && !h.asExpected && question.commanded === 'shutdown') return 'crimson';
+  switch (h.kind) {
+    case 'all_in_shutdown':
+      return h.asExpected || question.commanded !== 'released' ? 'plum' : 'rust';
+    case 'all_passing':
+      return 'petrol';
+    case 'some_passing':
+      return h.asExpected ? 'petrol' : 'rust';
+    case 'unpowered':
+    case 'unexplained':
+      return 'slate';
+    default:
+      return 'rust';
+  }
+}
+
+/** A chance that never claims to be certain. */
+export function chance(probability: number): string {
+  if (probability >= 0.995) return `over ${percent(0.99)}`;
+  if (probability < 0.005) return `under ${percent(0.01)}`;
+  return percent(probability);
+}
+
+/** Explanations worth a line: the likely ones, and the expected state even if it is not among them. */
+export function shownHypotheses(answer: Interpretation): RankedHypothesis[] {
+  const shown = answer.likely.slice(0, 6);
+  const expected = answer.hypotheses.find((h) => h.asExpected);
+  return expected && !shown.includes(expected) ? [...shown, expected] : shown;
+}
+
+/** "14 units in shutdown should give 7.5 to 9.3 V" with two standard deviations; null: nothing is expected. */
+export function expectedWords(answer: Interpretation): { words: string; from: number; to: number } | null {
+  const h = answer.hypotheses.find((item) => item.asExpected && item.kind !== 'unpowered');
+  if (!h || h.expectedV === null || h.sdV === null) return null;
+  const from = h.expectedV - 2 * h.sdV;
+  const to = h.expectedV + 2 * h.sdV;
+  const digits = Math.abs(to) < 20 ? 1 : 0;
+  return { words: `${number(from, digits)} to ${number(to, digits)} V`, from, to };
+}
+
+/** What the answer rests on and what would make it firmer. */
+export function reasoning(answer: Interpretation, question: ReadingQuestion): string[] {
+  const { units, unitType, meter, siblings, voltageV } = question;
+  const sentences = [`Expected: ${answer.expected}.`];
+  const band = expectedWords(answer);
+  if (band) sentences.push(`That would read ${band.words}.`);
+  const { passing } = expectedState(question);
+  const nominal = unitType.shutdownVoltage.nominal;
+  if (passing === 0 && Math.abs(voltageV) < 3 * units * unitType.shutdownVoltage.max)
+    sentences.push(
+      `One unit in shutdown is worth ${quantityV(nominal)}, ${quantityV(unitType.shutdownVoltage.min, 2)} to ${quantityV(unitType.shutdownVoltage.max, 2)} by its type.`,
+    );
+  if (answer.outcome === 'cant_tell' && siblings.length === 0)
+    sentences.push(
+      'Measure a string of the same types beside it, now: it shows what one unit gives in this light.',
+    );
+  if (answer.outcome === 'cant_tell' && siblings.length > 0)
+    sentences.push('Measure again before anything is changed.');
+  if (meter.mode === 'low_impedance' && passing < units)
+    sentences.push('A low-impedance input pulls units in shutdown down: measure again with an ordinary one.');
+  if (voltageV < 0)
+    sentences.push(
+      'The reading is negative: check the leads at the meter first, then the marking of the home run.',
+    );
+  return sentences;
+}
+const quantityV = (v: number, digits = 1): string => `${number(v, digits)}\u00a0V`;
+
+/** Whether the units follow the initiator, as far as type, command and roll call say. */
+export function initiatorWords(answer: Interpretation, question: ReadingQuestion): string {
+  const best = answer.hypotheses[0];
+  const contradicted = best !== undefined && hueOf(best, question) === 'crimson' && best.probability > 0.2;
+  if (contradicted)
+    return 'The reading speaks against it: units seem to pass though shutdown is commanded. Treat the string as live.';
+  if (answer.obeysInitiator === false)
+    return 'No. None of its units has spoken to anything yet, so none follows the initiator. Treat the string as live.';
+  if (answer.obeysInitiator === null)
+    return 'Only some: units that have not answered do not follow the initiator. Treat the string as live.';
+  return 'By the type entered its units follow the initiator. One reading does not show that they do: that takes a shutdown test.';
+}
+
+const HELP_NAMES: Record<Help['what'], string> = {
+  siblings: 'Readings of other strings',
+  conditions: 'Measured light and temperature',
+  roll_call: 'The roll call',
+  meter: 'An ordinary meter input, not a low-impedance one',
+};
+/** "Readings of other strings: from 58 % to 97 % for the first explanation". */
+export function helpWords(help: Help): { name: string; words: string } {
+  const name = HELP_NAMES[help.what];
+  if (help.bits < 0.02) return { name, words: 'changed nothing worth naming' };
+  return {
+    name,
+    words: `the first explanation stands at ${chance(help.with)} with it, ${chance(help.without)} without (${number(help.bits, 1)} bit)`,
+  };
+}
+
+/** The bold beginning of a caution and the rest of it. */
+export function cautionParts(caution: string): { strong: string; rest: string } {
+  const at = caution.indexOf(': ');
+  if (at < 0) return { strong: caution, rest: '' };
+  const rest = caution.slice(at + 2);
+  return { strong: `${caution.slice(0, at)}.`, rest: rest.charAt(0).toUpperCase() + rest.slice(1) };
+}
+
+/** What is read aloud: the answer first, the cautions always. */
+export function aloud(answer: Interpretation, question: ReadingQuestion): string {
+  const spokenVolts = `${number(question.voltageV, 1).replace('−', 'minus ')} volts.`;
+  const ranked = answer.likely
+    .filter((h) => h.kind !== 'unexplained')
+    .slice(0, 2)
+    .map((h) => `${h.words}: ${chance(h.probability).replace('\u00a0%', ' per cent')}.`);
+  return [
+    spokenVolts,
+    `${outcomeWords(answer)}.`,
+    ...ranked,
+    answer.earth?.words ?? '',
+    'Caution.',
+    ...answer.cautions,
+  ]
+    .filter(Boolean)
+    .join(' ');
+}
+
+/** The page's title in the browser's list of pages. */
+export const titleOf = (question: ReadingQuestion | null, answer: Interpretation | null): string =>
+  question && answer ? `${volts(question.voltageV)}: ${outcomeWords(answer).toLowerCase()}` : 'Try a reading';
