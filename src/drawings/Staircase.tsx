@@ -38,7 +38,8 @@ function bandOf(condition: Condition, paint: Paint): { ground: string; text: str
 export function staircaseInWords(g: StaircaseGeometry, input: StaircaseInput): string {
   const parts = [`Voltage staircase of ${input.slots.length} positions.`];
   if (input.voltage !== null) parts.push(`The string gives ${volts(input.voltage)}.`);
-  if (input.expectedVoltage !== null) parts.push(`Expected: ${volts(input.expectedVoltage)}.`);
+  const expected = input.expectedInShutdown ?? input.expectedVoltage;
+  if (expected !== null) parts.push(`Expected: ${volts(expected)}.`);
   if (g.total)
     parts.push(
       g.total.passing === null

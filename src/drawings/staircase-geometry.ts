@@ -7,6 +7,8 @@ export interface StaircaseInput {
   voltage: number | null;
   /** V if all passed */
   expectedVoltage: number | null;
+  /** V with all in shutdown, while that is in force: then it is what the dotted line shows. */
+  expectedInShutdown?: number | null;
 }
 
 export interface Step {
@@ -117,9 +119,11 @@ export function staircaseGeometry(input: StaircaseInput, width: number, height: 
   const plot = { left: 54, right: width - (width < 500 ? 30 : 76), top: 14, bottom: height - 40 };
   const untold = slots.length > 0 && slots.every((s) => ['untold', 'empty'].includes(conditionOf(s)));
   const sumExpected = slots.reduce((sum, s) => sum + (s.serial === null ? 0 : (s.expected ?? 0)), 0);
-  const expectedTotal = sumExpected > 0 ? sumExpected : input.expectedVoltage;
+  const ifPassing = sumExpected > 0 ? sumExpected : input.expectedVoltage;
+  const expectedTotal = input.expectedInShutdown ?? ifPassing;
   const measured = slots.map((s) => rise(s) ?? 0);
-  let peak = Math.max(expectedTotal ?? 0, untold ? (input.voltage ?? 0) : 0, 10);
+  // in shutdown too the scale is that of a passing string: a few volts must look like a few volts
+  let peak = Math.max(ifPassing ?? 0, expectedTotal ?? 0, untold ? (input.voltage ?? 0) : 0, 10);
   let level = 0;
   let lowest = 0;
   for (const v of measured) {
@@ -157,7 +161,8 @@ export function staircaseGeometry(input: StaircaseInput, width: number, height: 
     let e = 0;
     expectedPath = `M${plot.left} ${y(0).toFixed(1)}`;
     slots.forEach((slot, i) => {
-      if (slot.serial !== null) e += sumExpected > 0 ? (slot.expected ?? 0) : expectedTotal / share;
+      if (slot.serial !== null)
+        e += sumExpected > 0 && expectedTotal === sumExpected ? (slot.expected ?? 0) : expectedTotal / share;
       expectedPath += `V${y(e).toFixed(1)}H${(plot.left + (i + 1) * pitch).toFixed(1)}`;
     });
   }
@@ -167,7 +172,7 @@ export function staircaseGeometry(input: StaircaseInput, width: number, height: 
   const notOwed = slots.reduce((sum, s) => sum + (!untold && owesNothing(s) ? (s.expected ?? 0) : 0), 0);
   const short = expectedTotal !== null && reached !== null ? expectedTotal - notOwed - reached : 0;
   const gap =
-    expectedTotal && reached !== null && short > expectedTotal * GAP_FROM
+    expectedTotal && !input.expectedInShutdown && reached !== null && short > expectedTotal * GAP_FROM
       ? { volts: short, yExpected: y(reached + short), yMeasured: y(reached) }
       : null;
   const units = slots.filter((s) => s.serial !== null).length;

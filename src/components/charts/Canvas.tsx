@@ -6,6 +6,7 @@ import {
   GridComponent,
   MarkAreaComponent,
   MarkLineComponent,
+  MarkPointComponent,
   TooltipComponent,
 } from 'echarts/components';
 import * as echarts from 'echarts/core';
@@ -23,6 +24,7 @@ echarts.use([
   TooltipComponent,
   MarkAreaComponent,
   MarkLineComponent,
+  MarkPointComponent,
   DataZoomSliderComponent,
   DataZoomInsideComponent,
   CanvasRenderer,
@@ -35,7 +37,7 @@ export interface Span {
 interface Props {
   model: ChartModel;
   height: number;
-  narrow: boolean;
+  width: number;
   onReady: (chart: ECharts) => void;
   /** After the person has zoomed, a moment later; null: the whole is in sight. */
   onZoom: (span: Span | null) => void;
@@ -55,10 +57,13 @@ function spanInSight(chart: ECharts, timeZone: string): Span | null {
 }
 
 /** The canvas itself: loaded when a chart nears the screen. */
-export default function Canvas({ model, height, narrow, onReady, onZoom }: Props) {
+export default function Canvas({ model, height, width, onReady, onZoom }: Props) {
   const [colours, setColours] = useState(readColours);
   useEffect(() => onThemeChange(() => requestAnimationFrame(() => setColours(readColours()))), []);
-  const option = useMemo(() => chartOptions(model, colours, narrow), [model, colours, narrow]);
+  const option = useMemo(
+    () => chartOptions(model, colours, { width, height }),
+    [model, colours, width, height],
+  );
   const rest = useRef<ReturnType<typeof setTimeout>>(undefined);
   const events = useMemo(
     () => ({

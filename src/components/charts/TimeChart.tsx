@@ -50,16 +50,17 @@ function useNear(ref: { current: HTMLElement | null }): boolean {
   return near;
 }
 
-function useNarrow(ref: { current: HTMLElement | null }): boolean {
-  const [narrow, setNarrow] = useState(false);
+/** Width of the element, px, in steps that matter to a layout. */
+function useWidth(ref: { current: HTMLElement | null }): number {
+  const [width, setWidth] = useState(0);
   useEffect(() => {
     const element = ref.current;
     if (!element) return;
-    const watch = new ResizeObserver(() => setNarrow(element.clientWidth < 520));
+    const watch = new ResizeObserver(() => setWidth(Math.round(element.clientWidth / 20) * 20));
     watch.observe(element);
     return () => watch.disconnect();
   }, [ref]);
-  return narrow;
+  return width;
 }
 
 const TOOL =
@@ -76,7 +77,7 @@ export function TimeChart({ model, height = 300, csvHref, fileName, onZoom, cont
   const [said, setSaid] = useState('');
   const cursor = useRef<number | null>(null);
   const near = useNear(figure);
-  const narrow = useNarrow(figure);
+  const width = useWidth(figure);
   const ready = useCallback((instance: ECharts) => {
     chart.current = instance;
   }, []);
@@ -178,9 +179,9 @@ export function TimeChart({ model, height = 300, csvHref, fileName, onZoom, cont
       <div style={{ minHeight: height }}>
         {asTable ? (
           <ChartTable model={model} height={height} />
-        ) : near ? (
+        ) : near && width > 0 ? (
           <Suspense fallback={<ChartSketch model={model} height={height} />}>
-            <Canvas model={model} height={height} narrow={narrow} onReady={ready} onZoom={zoomed} />
+            <Canvas model={model} height={height} width={width} onReady={ready} onZoom={zoomed} />
           </Suspense>
         ) : (
           <ChartSketch model={model} height={height} />

@@ -3,7 +3,7 @@ import { describe, expect, it } from 'vitest';
 import { TOKENS, type Colours } from './colours';
 import { fromWall, toWall } from './local-time';
 import { valueAt, type ChartModel } from './model';
-import { chartOptions, readout } from './options';
+import { chartOptions, labelsOf, readout } from './options';
 
 const colours = Object.fromEntries(TOKENS.map((t) => [t, `rgb(${t})`])) as Colours;
 const FROM = Date.UTC(2026, 5, 3) / 1000;
@@ -26,8 +26,8 @@ const model = (more: Partial<ChartModel> = {}): ChartModel => ({
   marks: [],
   ...more,
 });
-const seriesOf = (m: ChartModel, narrow = false) =>
-  (chartOptions(m, colours, narrow) as { series: Record<string, unknown>[] }).series;
+const seriesOf = (m: ChartModel, width = 900) =>
+  (chartOptions(m, colours, { width, height: 330 }) as { series: Record<string, unknown>[] }).series;
 
 describe('the wall clock of a site', () => {
   it.each(['Europe/London', 'America/St_Johns', 'Asia/Kathmandu', 'Pacific/Chatham', 'UTC'])(
@@ -74,17 +74,46 @@ describe('a chart', () => {
     expect(readout(m, FROM + 130).rows[0]?.[1]).toBe('nothing reported');
   });
 
-  it('gives the grave marks their words first and none where there is no room', () => {
-    const mark = (from: number, tone: 'rust' | 'slate') =>
-      ({ from: FROM + from, to: null, words: tone, tone }) as const;
-    const shown = (m: ChartModel, narrow = false) =>
-      (seriesOf(m, narrow)[0]?.markLine as { data: { label: { show: boolean; formatter: string } }[] }).data
-        .filter((d) => d.label.show)
-        .map((d) => d.label.formatter);
-    const m = model({ marks: [mark(30_000, 'slate'), mark(30_600, 'slate'), mark(31_000, 'rust')] });
-    expect(shown(m)).toContain('08:36 rust');
-    expect(shown(m)).toHaveLength(2); // one on each side
-    expect(shown(m, true)).toEqual([]);
+  it('lays the words of marks so that none covers another, the grave ones first', () => {
+    fc.assert(
+      fc.property(
+        fc.array(
+          fc.record({
+            from: fc.integer({ min: 0, max: 86_000 }),
+            tone: fc.constantFrom('rust' as const, 'slate' as const, 'crimson' as const),
+            words: fc.string({ minLength: 3, maxLength: 60 }),
+          }),
+          { maxLength: 30 },
+        ),
+        (marks) => {
+          const m = model({ marks: marks.map((k) => ({ ...k, from: FROM + k.from, to: null })) });
+          const labels = labelsOf(m, 830, 238);
+          const px = (at: number) => ((at - FROM) / 86_400) * 830;
+          const boxes = labels.map((l) => {
+            const long = l.words.length * 6.6;
+            const at = px(l.mark.from);
+            return l.side === 'left'
+              ? { y: l.y, from: at - long, to: at }
+              : { y: l.y, from: at, to: at + long };
+          });
+          boxes.forEach((a, i) => {
+            expect(a.from).toBeGreaterThanOrEqual(0);
+            expect(a.to).toBeLessThanOrEqual(830);
+            for (const b of boxes.slice(i + 1))
+              expect(a.y !== b.y || a.to <= b.from || b.to <= a.from).toBe(true);
+          });
+          const gravest = marks.filter((k) => k.tone === 'crimson');
+          if (gravest.length > 0) expect(labels[0]?.mark.tone).toBe('crimson');
+        },
+      ),
+    );
+  });
+
+  it('leaves the words of marks out on a phone', () => {
+    const m = model({ marks: [{ from: FROM + 30_000, to: null, words: 'stuck', tone: 'rust' }] });
+    const points = (width: number) => (seriesOf(m, width)[0]?.markPoint as { data: unknown[] }).data;
+    expect(points(900)).toHaveLength(1);
+    expect(points(358)).toHaveLength(0);
   });
 
   it('finds the newest value at or before an instant', () => {

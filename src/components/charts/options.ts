@@ -5,6 +5,7 @@ import type { Colours } from './colours';
 import { fromWall, toWall } from './local-time';
 import { valueAt, type ChartBand, type ChartLine, type ChartModel } from './model';
 
+const GRID = { top: 30, bottom: 62 } as const;
 const FAMILY = '"Inter Tight Variable", system-ui, sans-serif';
 
 const escaped = (text: string): string =>
@@ -96,29 +97,57 @@ function lineSeries(line: ChartLine, model: ChartModel, c: Colours) {
   };
 }
 
-/**
- * Marks that have room for their words, and on which side of them: the grave ones first, none within a fifth of the span
- * of another on its side. Stretches speak to the left, instants to the right, while the edge leaves room.
- */
-function labelled(model: ChartModel): Map<number, 'left' | 'right'> {
-  const order = { crimson: 0, rust: 1, plum: 2, slate: 3, petrol: 4 } as const;
-  const span = model.to - model.from;
-  const sides = new Map<number, 'left' | 'right'>();
-  const free = (at: number, side: 'left' | 'right') =>
-    (side === 'left' ? at - model.from : model.to - at) > span * 0.2 &&
-    [...sides].every(([k, s]) => s !== side || Math.abs((model.marks[k]?.from ?? 0) - at) > span * 0.2);
-  const by = model.marks.map((m, i) => ({ m, i })).sort((a, b) => order[a.m.tone] - order[b.m.tone]);
-  for (const { m, i } of by) {
-    const liked = m.to === null ? (['right', 'left'] as const) : (['left', 'right'] as const);
-    const side = liked.find((s) => free(m.from, s));
-    if (side && sides.size < 6) sides.set(i, side);
-  }
-  return sides;
+const CHARACTER_PX = 6.6;
+const LANES = 4;
+const LANE_PX = 20;
+const WORDS_MOST = 40;
+
+interface Label {
+  mark: ChartModel['marks'][number];
+  words: string;
+  side: 'left' | 'right';
+  /** px from the top of the plot */
+  y: number;
 }
 
-function grounds(model: ChartModel, c: Colours, narrow: boolean) {
+/**
+ * Words of the marks, laid so that none covers another: the grave ones first, beside their mark on the side that has
+ * room, in one of a few lanes; what finds no room is left to the readout and the list of events.
+ */
+export function labelsOf(model: ChartModel, plotPx: number, plotHeight: number): Label[] {
+  const order = { crimson: 0, rust: 1, plum: 2, slate: 3, petrol: 4 } as const;
+  const perPx = (model.to - model.from) / Math.max(1, plotPx);
+  const when = model.to - model.from > 36 * 3600 ? shortDate : clock;
+  const taken: { lane: number; from: number; to: number }[] = [];
+  const labels: Label[] = [];
+  for (const mark of [...model.marks].sort((a, b) => order[a.tone] - order[b.tone] || b.from - a.from)) {
+    const said = `${when(mark.from * 1000, model.timeZone)} ${mark.words}`;
+    const words = said.length > WORDS_MOST ? `${said.slice(0, WORDS_MOST - 1).trimEnd()}…` : said;
+    const length = (words.length * CHARACTER_PX + 16) * perPx;
+    const spots = (mark.to === null ? (['right', 'left'] as const) : (['left', 'right'] as const)).flatMap(
+      (side) =>
+        Array.from({ length: LANES }, (_, lane) => ({
+          side,
+          lane,
+          from: side === 'left' ? mark.from - length : (mark.to ?? mark.from),
+          to: side === 'left' ? mark.from : (mark.to ?? mark.from) + length,
+        })),
+    );
+    const spot = spots.find(
+      (s) =>
+        s.from >= model.from &&
+        s.to <= model.to &&
+        taken.every((t) => t.lane !== s.lane || s.to <= t.from || s.from >= t.to),
+    );
+    if (!spot) continue;
+    taken.push(spot);
+    labels.push({ mark, words, side: spot.side, y: plotHeight * 0.4 + spot.lane * LANE_PX });
+  }
+  return labels;
+}
+
+function grounds(model: ChartModel, c: Colours, labels: readonly Label[]) {
   const x = (at: number) => toWall(at, model.timeZone);
-  const sides = labelled(model);
   return {
     type: 'line',
     id: 'grounds',
@@ -150,21 +179,31 @@ function grounds(model: ChartModel, c: Colours, narrow: boolean) {
       silent: true,
       animation: false,
       symbol: 'none',
-      data: model.marks.map((m, i) => ({
+      data: model.marks.map((m) => ({
         xAxis: x(m.from),
         lineStyle: {
           color: c[m.tone],
           type: m.to === null ? [4, 3] : 'solid',
           width: m.to === null ? 1.3 : 0.8,
         },
+        label: { show: false },
+      })),
+    },
+    markPoint: {
+      silent: true,
+      animation: false,
+      symbol: 'circle',
+      symbolSize: 0.1,
+      data: labels.map((l) => ({
+        xAxis: x(l.side === 'left' ? l.mark.from : (l.mark.to ?? l.mark.from)),
+        yAxis: 0,
+        y: GRID.top + l.y,
         label: {
-          show: sides.has(i) && !narrow,
-          formatter: `${(model.to - model.from > 36 * 3600 ? shortDate : clock)(m.from * 1000, model.timeZone)} ${m.words}`,
-          position: 'middle',
-          rotate: 0,
-          align: sides.get(i) === 'left' ? 'right' : 'left',
-          padding: [m.to === null ? 0 : 44, 8, 0, 8],
-          color: m.tone === 'rust' ? c['rust-ink'] : c[m.tone],
+          show: true,
+          position: l.side,
+          distance: 8,
+          formatter: l.words,
+          color: l.mark.tone === 'rust' ? c['rust-ink'] : c[l.mark.tone],
           fontSize: 12,
           fontWeight: 600,
           fontFamily: FAMILY,
@@ -188,7 +227,16 @@ const monthWords = (wallMs: number): string =>
   new Date(wallMs).toLocaleDateString('en-GB', { month: 'short', year: '2-digit', timeZone: 'UTC' });
 
 /** Everything that the chart library is told. Pure but for the given colours. */
-export function chartOptions(model: ChartModel, c: Colours, narrow: boolean): EChartsCoreOption {
+export function chartOptions(
+  model: ChartModel,
+  c: Colours,
+  size: { width: number; height: number },
+): EChartsCoreOption {
+  const narrow = size.width < 520;
+  const grid = { ...GRID, left: narrow ? 42 : 54, right: narrow ? 8 : 16 };
+  const labels = narrow
+    ? []
+    : labelsOf(model, size.width - grid.left - grid.right, size.height - grid.top - grid.bottom);
   const text = {
     color: c['ink-2'],
     fontSize: 12,
@@ -198,7 +246,7 @@ export function chartOptions(model: ChartModel, c: Colours, narrow: boolean): EC
     animation: false, // live values change in place; nothing slides
     useUTC: true,
     textStyle: text,
-    grid: { left: narrow ? 42 : 54, right: narrow ? 8 : 16, top: 30, bottom: 62 },
+    grid,
     xAxis: {
       type: 'time',
       min: toWall(model.from, model.timeZone),
@@ -271,7 +319,7 @@ export function chartOptions(model: ChartModel, c: Colours, narrow: boolean): EC
         : [{ type: 'inside', zoomOnMouseWheel: 'ctrl', moveOnMouseWheel: false, filterMode: 'none' }]),
     ],
     series: [
-      grounds(model, c, narrow),
+      grounds(model, c, labels),
       ...(model.band ? bandSeries(model.band, model, c.petrol, 0.16, 'band') : []),
       ...(model.spread ? bandSeries(model.spread, model, c['ink-3'], 0.22, 'spread') : []),
       ...model.lines.map((line) => lineSeries(line, model, c)),

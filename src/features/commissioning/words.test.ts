@@ -47,6 +47,7 @@ const stringOf = (name: string, slots: SlotNow[], kind: StringNow['kind'] = 'mon
   power: null,
   expectedVoltage: null,
   expectedBand: null,
+  expectedInShutdown: null,
   expectedFrom: '',
   command: null,
   dark: false,

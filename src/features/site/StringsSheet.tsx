@@ -102,11 +102,15 @@ const columnsFor = (site: string): Column<StringNow>[] => [
     cell: (string) => (
       <>
         {volts(string.voltage)}
-        {string.expectedVoltage !== null && (
+        {string.expectedInShutdown !== null ? (
+          <span className="block text-xs text-ink-2" title="with every unit in shutdown, by the type entered">
+            {volts(string.expectedInShutdown)} in shutdown
+          </span>
+        ) : string.expectedVoltage !== null ? (
           <span className="block text-xs text-ink-2" title={`expected by ${string.expectedFrom}`}>
             {volts(string.expectedVoltage)} expected
           </span>
-        )}
+        ) : null}
       </>
     ),
   },

@@ -97,6 +97,7 @@ const string = (name: string, slots: SlotNow[], some: Partial<StringNow> = {}): 
   power: 2800,
   expectedVoltage: null,
   expectedBand: null,
+  expectedInShutdown: null,
   expectedFrom: '',
   command: null,
   dark: false,

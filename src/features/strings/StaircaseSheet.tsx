@@ -33,7 +33,9 @@ function Legend({ page }: { page: StringPage }) {
   const assumed = string.slots.some((s) => s.assumed);
   return (
     <p className="mt-2 text-sm text-ink-2">
-      {string.expectedVoltage !== null && `Dotted: expected from ${string.expectedFrom}. `}
+      {string.expectedInShutdown !== null
+        ? 'Dotted: every unit in shutdown, by the type entered. '
+        : string.expectedVoltage !== null && `Dotted: expected from ${string.expectedFrom}. `}
       {assumed && 'Dashed: assumed from what the unit claims, not measured at its output. '}
     </p>
   );
@@ -46,6 +48,7 @@ export function StaircaseSheet({ page }: { page: StringPage }) {
     slots: string.slots,
     voltage: string.voltage,
     expectedVoltage: string.expectedVoltage,
+    expectedInShutdown: string.expectedInShutdown,
   };
   return (
     <Sheet

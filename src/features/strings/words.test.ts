@@ -53,6 +53,7 @@ function string(change: Record<number, Partial<SlotNow>> = {}, more: Partial<Str
     power: voltage * 8,
     expectedVoltage: 546,
     expectedBand: [535, 557],
+    expectedInShutdown: null,
     expectedFrom: 'the other strings on the south roof',
     command: null,
     dark: false,
@@ -141,13 +142,16 @@ describe('the finding of a string', () => {
 
   it('keeps a shutdown on purpose apart and never calls it isolated', () => {
     const f = found(
-      string(every({ state: 'shutdown', verdict: 'ok', voltage: 0.6 }), commanded('initiator')),
+      string(every({ state: 'shutdown', verdict: 'ok', voltage: 0.6 }), {
+        ...commanded('initiator'),
+        expectedInShutdown: 8.4,
+      }),
     );
     expect(f).toEqual({
       kind: 'in_shutdown',
       heading: 'B3 is in shutdown on purpose',
       sentence:
-        'Shutdown by the initiator (Whole roof) since 10:24. All 14 units report it; the string gives 8.4 V. Each module and its leads to its unit stay at module voltage.',
+        'Shutdown by the initiator (Whole roof) since 10:24. All 14 units report it; the string gives 8.4 V, where 8.4 V is expected in shutdown. Each module and its leads to its unit stay at module voltage.',
     });
   });
 

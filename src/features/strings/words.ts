@@ -178,7 +178,12 @@ function whileCommanded(string: StringNow, when: When): Finding {
     heading: `${name} is in shutdown on purpose`,
     sentence: [
       `${commanded(string, when)} ${counts.shutdown === counts.units ? `All ${counted(counts.units, 'unit')} report it` : `${counted(counts.shutdown, 'unit')} of ${number(counts.units)} report it so far`}`,
-      ...(string.voltage === null ? ['.'] : ['; the string gives ', { strong: volts(string.voltage) }, '.']),
+      ...(string.voltage === null ? ['.'] : ['; the string gives ', { strong: volts(string.voltage) }]),
+      ...(string.voltage !== null && string.expectedInShutdown !== null
+        ? [`, where ${volts(string.expectedInShutdown)} is expected in shutdown.`]
+        : string.voltage === null
+          ? []
+          : ['.']),
       ' Each module and its leads to its unit stay at module voltage.',
     ],
   };

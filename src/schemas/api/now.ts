@@ -72,6 +72,8 @@ export const stringNow = z.object({
   power: z.number().nullable(), // W
   expectedVoltage: z.number().nullable(),
   expectedBand: z.tuple([z.number(), z.number()]).nullable(), // V, where the expectation lies 9 times in 10
+  /** V open circuit with every unit in shutdown, by the type entered, while shutdown is in force; else null. */
+  expectedInShutdown: z.number().nullable(),
   expectedFrom: z.string(), // in words: "other strings on the south roof", "clear-sky model"
   command: commandNow.nullable(),
   dark: z.boolean(), // too little light to power the units

@@ -218,6 +218,8 @@ function mapped(own: Measured, around: Around): StringNow {
   const alone = row.inputStrings === 1;
   const inputCurrent = scaled(row.inputCurrent, 100);
   const current = medianOf(currents) ?? (row.kind === 'shutdown_only' && alone ? inputCurrent : null);
+  const command = commandOf(around.site.said, row);
+  const inForce = command !== null && command.inForce !== 'released' && !dark;
   const told = units.some((s) => s.state === 'passing' || s.state === 'shutdown');
   return {
     id: row.ref,
@@ -233,8 +235,9 @@ function mapped(own: Measured, around: Around): StringNow {
       (voltage !== null && current !== null ? voltage * current : null),
     expectedVoltage: expected ? expected.voltage * units.length : null,
     expectedBand: expected ? expectedBand(expected, units.length) : null,
+    expectedInShutdown: inForce ? units.length * row.shutdownVoltage : null,
     expectedFrom: expected ? FROM_WORDS[expected.from](planeWords(plane?.name ?? 'same plane')) : '',
-    command: commandOf(around.site.said, row),
+    command,
     dark,
     input: {
       inverter: row.inverter,
