@@ -26,6 +26,7 @@ export default defineConfig({
           include: ['tests/architecture/**/*.test.ts'],
           isolate: false,
           fileParallelism: false,
+          sequence: { groupOrder: 1 }, // projects with workers of their own number run one after the other
           setupFiles: [noise],
         },
       },
@@ -64,6 +65,7 @@ export default defineConfig({
           setupFiles: [noise],
           globalSetup: [database, build],
           fileParallelism: false,
+          sequence: { groupOrder: 2 },
           testTimeout: 240_000,
           hookTimeout: 240_000,
         },

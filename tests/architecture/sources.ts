@@ -69,7 +69,8 @@ export function importsOf(file: string, text: string): Import[] {
       found.push({ specifier: node.text, file: resolve(file, node.text), typeOnly });
   };
   const visit = (node: ts.Node): void => {
-    if (ts.isImportDeclaration(node)) add(node.moduleSpecifier, node.importClause?.isTypeOnly ?? false);
+    if (ts.isImportDeclaration(node))
+      add(node.moduleSpecifier, node.importClause?.phaseModifier === ts.SyntaxKind.TypeKeyword);
     else if (ts.isExportDeclaration(node)) add(node.moduleSpecifier, node.isTypeOnly);
     else if (ts.isCallExpression(node) && node.expression.kind === ts.SyntaxKind.ImportKeyword)
       add(node.arguments[0], false);
