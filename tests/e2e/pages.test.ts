@@ -76,6 +76,8 @@ const stringOf = (name: string, string: string) => fleet.site(name).strings.get(
 const PAGES: readonly Shown[] = [
   { name: 'fleet', role: 'analyst', path: () => '/', file: 'index.astro' },
   { name: 'shutdown', role: 'analyst', path: () => '/shutdown', file: 'shutdown.astro' },
+  { name: 'a reading', role: 'technician', path: () => '/try-a-reading', file: 'try-a-reading.astro' },
+  { name: 'methods', role: 'analyst', path: () => '/methods', file: 'methods.astro' },
   { name: 'status', role: 'manager', path: () => '/status', file: 'status.astro' },
   {
     name: 'site',
