@@ -63,10 +63,10 @@ const NEVER_PRIOR = [0.2, 0.22, 0.2, 0.16, 0.11, 0.06, 0.035, 0.015];
 const SCALES = 36;
 /** Correlation among units of one site that is left after the model; from experience, calibrated by simulation. */
 const TOGETHER = 0.015;
-const BAND = 0.9;
+export const BAND = 0.9;
 const CURVE_POINTS = 24;
 /** A group counts as not stirred when so improbable by the pace of the others. */
-const NOT_STIRRED_BELOW = 0.01;
+export const NOT_STIRRED_BELOW = 0.01;
 
 interface Particle {
   weight: number;

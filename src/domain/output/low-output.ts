@@ -26,8 +26,8 @@ export interface OutputFinding {
 export const Z_LIMIT = 3.5;
 /** Less than this is within what modules differ by: IEC 62446-1 compares strings to 5 %. */
 export const LOSS_MIN = 0.05;
-const DAYS_LOOKED_AT = 5;
-const DAYS_LOW = 3;
+export const DAYS_LOOKED_AT = 5;
+export const DAYS_LOW = 3;
 /** Standard deviation of made over modelled output: without and with its own past to compare to. From experience. */
 const MODEL_SD = { fresh: 0.05, withPast: 0.02 } as const;
 /** DC output over poaGlobal × power × temperature on a sound string. From experience: dirt, mismatch, cables, tracking. */

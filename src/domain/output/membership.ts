@@ -45,7 +45,7 @@ const RESOLUTION = 0.006;
 /** Samples below this share of the day's highest current are left out. */
 const SHARE_OF_PEAK = 0.1;
 /** A unit on another string must be so much likelier there: odds of 1 to 1,000 are the prior of a wrong drawing. */
-const ODDS_NEEDED = Math.log(1000) + Math.log(20);
+export const ODDS_NEEDED = Math.log(1000) + Math.log(20);
 /**
  * How much of each sample counts: neighbours in time repeat each other, and a string's typical current has an error of
  * its own that all comparisons with it share. From experience, checked by simulation.

@@ -22,18 +22,18 @@ export interface InputReading {
 /** NEC 690.12(B)(1): conductors outside the array boundary after initiation. */
 export const OUTSIDE_ARRAY_LIMIT_V = 30;
 /** Readings that must agree before a finding begins or ends. The gravest needs two, for one may be a stray. */
-const AGREEING: Record<StringFinding, number> = {
+export const AGREEING: Record<StringFinding, number> = {
   not_shutting_down: 2,
   stuck_positions_unknown: 3,
   unexplained_voltage: 3,
 };
-const AGREEING_TO_END = 2;
+export const AGREEING_TO_END = 2;
 /** A sum of unit outputs and an input reading belong together within so many report intervals. */
 const TOGETHER_INTERVALS = 1.5;
 /** Relative uncertainty of an inverter's own input measurement; from experience. */
-const INPUT_ACCURACY = 0.02;
+export const INPUT_ACCURACY = 0.02;
 /** A deficit or excess must be so many standard deviations (as for the modified z-score: Iglewicz & Hoaglin 1993). */
-const DEVIATIONS = 3.5;
+export const DEVIATIONS = 3.5;
 
 type Suspicion = { kind: StringFinding; evidence: FindingEvidence };
 

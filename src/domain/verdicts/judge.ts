@@ -38,7 +38,7 @@ const LATE = VERDICTS.indexOf('late');
 const FLAPPING = VERDICTS.indexOf('flapping');
 
 /** A unit is silent after so many report intervals. */
-const SILENT_AFTER_INTERVALS = 3;
+export const SILENT_AFTER_INTERVALS = 3;
 /** A gap in a unit's reports that counts as a night when nobody swept in between, seconds. */
 const NIGHT_GAP_S = 4 * 3600;
 

@@ -1,0 +1,146 @@
+import { judgeMembership, type MemberString, type MembershipOutcome } from '../../domain/output/membership';
+import { fitLoop, judgeLoop, type LoopSample } from '../../domain/output/resistance';
+import { number, quantity } from '../../drawings/numbers';
+import type { Example } from './example';
+
+const SAMPLES = 96;
+/** Current of a string through a day with clouds, A. */
+const dayCurrent = (k: number): number =>
+  9 * Math.sin((Math.PI * (k + 0.5)) / SAMPLES) * (0.8 + 0.2 * Math.cos(k * 1.7));
+/** A small unrest that repeats itself exactly: an example must not change by itself. */
+const unrest = (k: number, phase: number): number => Math.sin(k * 2.399 + phase * 1.3);
+
+const OUTCOMES: Record<MembershipOutcome, string> = {
+  here: 'It sits where the drawing says',
+  elsewhere: 'It carries the current of another string',
+  cant_tell: 'Can’t tell',
+  fits_none: 'Its current fits no string',
+};
+
+export const membershipExample: Example = {
+  inputs: [
+    {
+      kind: 'number',
+      key: 'apart',
+      label: 'Strings differ in current by',
+      unit: '%',
+      min: 0,
+      max: 50,
+      start: 12,
+    },
+    {
+      kind: 'number',
+      key: 'accuracy',
+      label: 'Accuracy of the units',
+      unit: '%',
+      min: 0.1,
+      max: 10,
+      start: 1,
+    },
+    {
+      kind: 'choice',
+      key: 'wired',
+      label: 'Unit 1 of A1 is really wired into',
+      options: [
+        { value: 'A2', label: 'A2' },
+        { value: 'A1', label: 'A1' },
+      ],
+      start: 'A2',
+    },
+  ],
+  answer: ({ number: n, choice }) => {
+    const apart = n('apart') / 100;
+    const accuracy = n('accuracy') / 100;
+    // the lead changes over the day, as cloud and a different tilt make it
+    const other = (k: number): number => dayCurrent(k) * (1 + apart * (0.75 + 0.25 * Math.sin(k / 9)));
+    const unit = (of: (k: number) => number, id: number): Float64Array =>
+      Float64Array.from(
+        { length: SAMPLES },
+        (_, k) => of(k) * (1 + 0.8 * accuracy * unrest(id, 3)) * (1 + 0.002 * unrest(k, id)),
+      );
+    const strings: MemberString[] = [
+      {
+        name: 'A1',
+        currents: Array.from({ length: 8 }, (_, i) =>
+          unit(i === 0 && choice('wired') === 'A2' ? other : dayCurrent, i + 1),
+        ),
+      },
+      { name: 'A2', currents: Array.from({ length: 8 }, (_, i) => unit(other, i + 21)) },
+    ];
+    const judged = judgeMembership(strings, { accuracy }).find((m) => m.string === 'A1' && m.unit === 0);
+    if (!judged) throw new RangeError('the judgement left unit 1 of A1 out');
+    return {
+      finding: judged.otherString
+        ? `${OUTCOMES[judged.outcome]}: ${judged.otherString}`
+        : OUTCOMES[judged.outcome],
+      figures: [
+        { label: 'In words', value: judged.words },
+        { label: 'ln of the odds for that string', value: number(judged.logOdds, 1) },
+        { label: 'Can not be parted from', value: judged.undecidedWith.join(', ') || '–' },
+      ],
+    };
+  },
+};
+
+export const resistanceExample: Example = {
+  inputs: [
+    {
+      kind: 'number',
+      key: 'now',
+      label: 'Resistance of the loop now',
+      unit: 'Ω',
+      min: 0,
+      max: 5,
+      start: 0.65,
+    },
+    { kind: 'number', key: 'past', label: 'When all was in order', unit: 'Ω', min: 0, max: 5, start: 0.4 },
+    {
+      kind: 'number',
+      key: 'gain',
+      label: 'Gain error of the input',
+      unit: '%',
+      min: -1.5,
+      max: 1.5,
+      start: 0.8,
+    },
+  ],
+  answer: ({ number: n }) => {
+    const samples = (ohm: number): LoopSample[] =>
+      Array.from({ length: 120 }, (_, k) => {
+        const ownA = 2 + 8 * Math.sin((Math.PI * (k + 0.5)) / 120);
+        const sumV = 440 + 9 * unrest(k, 1);
+        return {
+          atS: k * 300,
+          sumV: sumV + 0.15 * unrest(k, 2),
+          inputV: (sumV - ohm * ownA) * (1 + n('gain') / 100),
+          ownA,
+          othersA: 0,
+        };
+      });
+    const past = fitLoop(samples(n('past')));
+    const finding = judgeLoop(fitLoop(samples(n('now'))), {
+      past: typeof past === 'string' ? null : past,
+      siblingsOhm: [],
+      cableOhm: n('past'),
+    });
+    return {
+      finding: finding.words,
+      figures: [
+        {
+          label: 'Fitted now, with 95 % interval',
+          value: finding.fit
+            ? `${quantity(finding.fit.ohm, 'Ω', 2)} (${number(finding.fit.low, 2)} to ${number(finding.fit.high, 2)})`
+            : '–',
+        },
+        {
+          label: `More than ${finding.above?.comparedWith ?? 'before'}`,
+          value: finding.above ? quantity(finding.above.ohm, 'Ω', 2) : '–',
+        },
+        {
+          label: 'Threshold',
+          value: `${quantity(finding.threshold.ohm, 'Ω', 2)}; ${finding.threshold.source}`,
+        },
+      ],
+    };
+  },
+};
