@@ -170,6 +170,7 @@ export async function down(knex: Knex): Promise<void> {
         revoke all on all sequences in schema public from wakeline_app, wakeline_ingest;
         revoke all on function ensure_days(date, date), drop_days_before(date) from wakeline_ingest;
         grant execute on function ensure_days(date, date) to public;
+        grant execute on function drop_days_before(date) to public;
         revoke usage on schema public from wakeline_app, wakeline_ingest;
       end if;
     end $$;

@@ -195,6 +195,7 @@ describe('the web account', () => {
     ).rejects.toMatchObject(DENIED);
     await expect(attempt('create role mine')).rejects.toMatchObject(DENIED);
     await expect(attempt(`select ensure_days(current_date, current_date)`)).rejects.toMatchObject(DENIED);
+    await expect(attempt('select drop_days_before(current_date)')).rejects.toMatchObject(DENIED);
   });
 
   it('cannot log in with more rights than it has: no superuser, no bypass', async () => {
