@@ -101,6 +101,7 @@ const CHARACTER_PX = 6.6;
 const LANES = 4;
 const LANE_PX = 20;
 const WORDS_MOST = 40;
+const LABELS_MOST = 6;
 
 interface Label {
   mark: ChartModel['marks'][number];
@@ -139,7 +140,7 @@ export function labelsOf(model: ChartModel, plotPx: number, plotHeight: number):
         s.to <= model.to &&
         taken.every((t) => t.lane !== s.lane || s.to <= t.from || s.from >= t.to),
     );
-    if (!spot) continue;
+    if (!spot || labels.length === LABELS_MOST) continue;
     taken.push(spot);
     labels.push({ mark, words, side: spot.side, y: plotHeight * 0.4 + spot.lane * LANE_PX });
   }
@@ -201,7 +202,9 @@ function grounds(model: ChartModel, c: Colours, labels: readonly Label[]) {
         label: {
           show: true,
           position: l.side,
-          distance: 8,
+          distance: 6,
+          padding: [1, 2],
+          backgroundColor: c.sheet, // the lines of other marks pass behind
           formatter: l.words,
           color: l.mark.tone === 'rust' ? c['rust-ink'] : c[l.mark.tone],
           fontSize: 12,
