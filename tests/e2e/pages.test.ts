@@ -78,6 +78,14 @@ const PAGES: readonly Shown[] = [
   { name: 'shutdown', role: 'analyst', path: () => '/shutdown', file: 'shutdown.astro' },
   { name: 'a reading', role: 'technician', path: () => '/try-a-reading', file: 'try-a-reading.astro' },
   { name: 'methods', role: 'analyst', path: () => '/methods', file: 'methods.astro' },
+  {
+    name: 'a reading to try',
+    role: 'technician',
+    path: () => '/try-a-reading?v=7.8&others=14%3A8.4',
+    file: 'try-a-reading.astro',
+  },
+  { name: 'methods', role: 'analyst', path: () => '/methods', file: 'methods.astro' },
+  { name: 'methods, for an owner', role: 'customer', path: () => '/methods', file: 'methods.astro' },
   { name: 'status', role: 'manager', path: () => '/status', file: 'status.astro' },
   {
     name: 'site',
