@@ -84,7 +84,6 @@ const PAGES: readonly Shown[] = [
     path: () => '/try-a-reading?v=7.8&others=14%3A8.4',
     file: 'try-a-reading.astro',
   },
-  { name: 'methods', role: 'analyst', path: () => '/methods', file: 'methods.astro' },
   { name: 'methods, for an owner', role: 'customer', path: () => '/methods', file: 'methods.astro' },
   { name: 'status', role: 'manager', path: () => '/status', file: 'status.astro' },
   {
