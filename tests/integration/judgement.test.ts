@@ -180,13 +180,12 @@ describe('a process that dies', () => {
     await release(t0 - 3600);
     await story(0, t0, 0, 4);
     await leave(world);
-    const n = broken.serials.length;
     for (let k = 4; k < minutes - 1; k++)
       await world.db.owner.query(
         `insert into string_frame (at, mask, string_id, voltage_sum, power_sum, voltage, voltage_in, current, power, temperature, signal, via, state)
-         select to_timestamp($2::int4), mask, string_id, voltage_sum, power_sum, voltage, voltage_in, current, power, temperature, signal, via, $3
-         from string_frame where string_id = $1 and at = to_timestamp($4::int4)`,
-        [idOf(broken.name), t0 + 60 * k, claimsOf(0, [2, 5]), t0],
+         select to_timestamp($2::int4), mask, string_id, voltage_sum, power_sum, voltage, voltage_in, current, power, temperature, signal, via, state
+         from string_frame where string_id = $1 and at = to_timestamp($3::int4)`,
+        [idOf(broken.name), t0 + 60 * k, t0 + 180],
       );
     expect((await judged(broken.name)).verdict).not.toContain('stuck');
     world = await enter(world.db, fleet.site(THIRD_SITE));
@@ -194,7 +193,7 @@ describe('a process that dies', () => {
     await send(0, t0 + 60 * (minutes - 1), claimsOf(0, [2, 5]));
     await leave(world); // keeps the newest memories
     const b = await judged(broken.name);
-    const shared = Math.min(n, whole.serials.length);
+    const shared = Math.min(broken.serials.length, whole.serials.length);
     expect(b.verdict.slice(0, shared)).toEqual(a.judged.verdict.slice(0, shared));
     expect(b.state.slice(0, shared)).toEqual(a.judged.state.slice(0, shared));
     expect(b.frameAt).toBe(a.judged.frameAt);

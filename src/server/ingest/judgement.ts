@@ -3,8 +3,9 @@ import type pg from 'pg';
 import { connect, database } from '../db/pools';
 import { isDatabaseAway } from '../errors';
 import { log } from '../log';
-import { framesAfter, inputsOf, judgementsOf, takeSites } from '../queries/judgement';
+import { framesAfter, inputsOf, judgementsOf, releaseSites, takeSites } from '../queries/judgement';
 import { judgedSite } from '../queries/judgement-contexts';
+import { seenPassing } from '../../domain/verdicts/conductors';
 import type { KnownLogger } from '../queries/ingest-loggers';
 import { CHANNELS, sendNotices } from '../queries/live-notices';
 import type { Batch } from './batch';
@@ -77,7 +78,16 @@ export class Judgement {
     await Promise.all([...this.refreshing.values()].map((r) => r.next ?? r.current));
     for (const site of this.sites.values()) this.writer.checkpoint(site, true);
     await this.writer.stop();
-    await this.lock?.end();
+    const { lock } = this;
+    this.lock = undefined;
+    if (!lock) return;
+    try {
+      // given back by word: the end of a connection may take the server a moment
+      await releaseSites(lock);
+      await lock.end();
+    } catch (error) {
+      if (!isDatabaseAway(error)) throw error; // the locks went with the connection
+    }
   }
 
   /** The plant or its commands changed, or another process wrote frames: reads the site again. */
@@ -300,18 +310,18 @@ export class Judgement {
     );
     if (fresh.length === 0) return outcomes;
     const modules = await expectedModules(judge);
-    const byInput = new Map<number, number>();
-    for (const { string } of judge.strings.values())
-      byInput.set(string.inputId, (byInput.get(string.inputId) ?? 0) + 1);
     for (const input of fresh) {
       this.judgedInputs.set(input.inputId, input.atS);
-      for (const judged of judge.strings.values()) {
-        if (judged.string.inputId !== input.inputId) continue;
+      const onInput = [...judge.strings.values()].filter((j) => j.string.inputId === input.inputId);
+      const passing = onInput.map((j) => seenPassing(j.memory, j.context, input.atS));
+      const allPassing = passing.reduce((a, b) => a + b, 0);
+      for (const [k, judged] of onInput.entries()) {
         const outcome = judge.input(judged, {
           atS: input.atS,
           voltageV: input.voltageV,
           currentA: input.currentA,
-          strings: byInput.get(input.inputId) ?? 1,
+          strings: onInput.length,
+          othersPassing: allPassing - (passing[k] ?? 0),
           module: modules.get(judged.string.id) ?? null,
         });
         if (outcome) outcomes.push({ site: judge, outcome });

@@ -212,6 +212,10 @@ export async function takeSites(client: pg.ClientBase, held: readonly number[]):
   return rows.map((r) => r.id);
 }
 
+export async function releaseSites(client: pg.ClientBase): Promise<void> {
+  await client.query('select pg_advisory_unlock_all()');
+}
+
 /** Units whose reports came without a `heard`: they answered all the same, and are written down as heard. */
 export async function hearReportingUnits(
   client: pg.ClientBase,
