@@ -15,7 +15,12 @@ export default defineConfig({
         extends: true,
         test: {
           name: 'unit',
-          include: ['src/**/*.test.{ts,tsx}', 'simulator/**/*.test.ts', 'tests/reference/**/*.test.ts'],
+          include: [
+            'src/**/*.test.{ts,tsx}',
+            'simulator/**/*.test.ts',
+            'tests/reference/**/*.test.ts',
+            'tests/bench/**/*.test.ts',
+          ],
           setupFiles: [noise],
         },
       },

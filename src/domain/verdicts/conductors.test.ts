@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import { UNIT_PRESETS } from '../equipment/unit-type';
-import { judgeInput, type InputReading } from './conductors';
+import { judgeInput, seenPassing, type InputReading } from './conductors';
 import { commandedSpans, judgementTimes, type CommandPoint, type StringContext } from './context';
 import { UNCHANGED } from './evidence';
 import { judgeFrame, sweepString } from './judge';
@@ -57,6 +57,25 @@ describe('a home run that stays up', () => {
     const memory = newMemory(context);
     judgeFrame(memory, context, { atS: NOON + 90, state: [1, ...new Array<number>(9).fill(2)] });
     expect(feed(memory, context, NOON + 200, [45, 45, 45])).toEqual([null, null, null]);
+  });
+  it('is left to a unit of another string on the input that is seen to pass', () => {
+    const context = contextOf('monitored', [released, pressed], 10);
+    const memory = newMemory(context);
+    judgeFrame(memory, context, { atS: NOON + 20, state: new Array<number>(10).fill(2) });
+    const shared = { strings: 2, othersPassing: 1 };
+    expect(feed(memory, context, NOON + 200, [45, 45, 45], shared)).toEqual([null, null, null]);
+    const found = feed(memory, context, NOON + 400, [45, 45], { ...shared, othersPassing: 0 });
+    expect(found[1]?.finding).toMatchObject({ kind: 'not_shutting_down', evidence: { scope: 'input' } });
+  });
+  it('is not explained by a unit that passed before the command and is silent since', () => {
+    const context = contextOf('monitored', [released, pressed], 10);
+    const memory = newMemory(context);
+    judgeFrame(memory, context, { atS: NOON - 60, state: new Array<number>(10).fill(1) });
+    const state = [null, ...new Array<number>(9).fill(2)];
+    judgeFrame(memory, context, { atS: NOON + 20, state });
+    expect(seenPassing(memory, context, NOON + 200)).toBe(0);
+    const found = feed(memory, context, NOON + 200, [45, 45]);
+    expect(found[1]?.finding).toMatchObject({ kind: 'not_shutting_down', evidence: { scope: 'string' } });
   });
   it('ends with the release, and a shared input is named as such', () => {
     const zone = [released, pressed, { sinceS: NOON + 900, inForce: 'released' as const }];

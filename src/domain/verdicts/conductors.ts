@@ -12,6 +12,8 @@ export interface InputReading {
   currentA: number | null;
   /** Strings on this input, this one included: they share its voltage. */
   strings: number;
+  /** Units of the other strings on this input that are seen to pass (`seenPassing`): they explain a voltage too. */
+  othersPassing?: number;
   /**
    * What one passing module of this string should give now (its working voltage when current flows, voc otherwise) and
    * the relative standard deviation of a whole string of them; null: nobody can say.
@@ -73,8 +75,7 @@ function afterShutdown(
   const thresholdV = Math.max(OUTSIDE_ARRAY_LIMIT_V, 2 * units * shutdownVoltage.max);
   if (voltageV <= thresholdV) return null;
   // units that say that they pass explain it: they have a verdict of their own
-  const passing = memory.output.filter((o, i) => context.slots[i] && o !== 0 && o !== SEEN_SHUTDOWN).length;
-  if (passing > 0) return null;
+  if (seenPassing(memory, context, input.atS) + (input.othersPassing ?? 0) > 0) return null;
   const alone = input.strings === 1;
   const per = input.module === null ? null : input.module.expectedV - shutdownVoltage.nominal;
   const likely = (v: number): number => Math.min(units, Math.max(1, Math.round(v)));
@@ -200,6 +201,17 @@ function countHeld(
           ],
     },
   };
+}
+
+/**
+ * Units of a string that were seen to pass since the command that is in force at `atS`, by their claim or by what was
+ * measured on them. One that fell silent before it counts for nothing: it may have followed or not.
+ */
+export function seenPassing(memory: StringMemory, context: StringContext, atS: number): number {
+  const { sinceS } = commandedAt(context.commands, atS);
+  return memory.output.filter(
+    (o, i) => context.slots[i] && o !== 0 && o !== SEEN_SHUTDOWN && memory.seen[i]! > sinceS,
+  ).length;
 }
 
 const unitCount = (context: StringContext): number => context.slots.filter(Boolean).length;

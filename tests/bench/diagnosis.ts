@@ -1,0 +1,64 @@
+import { conductDay } from './diagnosis/conduct-scenarios';
+import { newConductScore, runConductDay } from './diagnosis/conduct';
+import { aim, figure, middle, type Tally } from './diagnosis/scoring';
+
+/**
+ * Judgements against a plant of which the truth is known: the simulator's, run in this process over labelled
+ * plant-days. Latitudes from 58° N to 43° S, all seasons, clear to overcast skies, all kinds of unit, 12 to 600 units,
+ * lost reports, gaps of twenty minutes, clocks that are off. `--days N`: so many plant-days (360 unless said).
+ *
+ * How the plant differs from what the judgements assume:
+ * - clear sky by simplified Solis with haze of its own each day (the judgements: Ineichen with one turbidity), clouds
+ *   as a drifting field in space, so that errors of strings are correlated; Perez and isotropic transposition;
+ * - cell temperature by wind and with the lag of a roof (the judgements: NOCT, no lag), row ends cooler than the middle;
+ * - an explicit curve V(I) with weak-light leakage, series resistance and voc of each module drawn one by one (the
+ *   judgements: five-parameter diode, voc by its coefficient, alike modules); bypass diodes at −0.45 V a group;
+ * - meter gain errors, shutdown voltages and delays of each unit its own; trackers that wobble; dirt that rain washes
+ *   off; capacitors that hold a home run up; connectors that no drawing shows.
+ * Stuck: in shutdown in daylight (sun above 6°, dawn is nobody's fault) though released. A fault that fewer than four
+ * reports showed is not scored. A cause is scored where at least half of the fault's units have its verdict.
+ */
+const flag = process.argv.indexOf('--days');
+const days = flag < 0 ? 360 : Number(process.argv[flag + 1]);
+if (!Number.isInteger(days) || days < 1)
+  throw new Error('--days takes a whole number of plant-days, at least 1.');
+const verbose = process.argv.includes('--verbose');
+const say = (line: string): void => void process.stdout.write(`${line}\n`);
+const progress = (line: string): void => void process.stderr.write(`${line}\n`);
+
+function tally(name: string, t: Tally, per: string): void {
+  say(figure(`${name}.precision`, t.precision, 'share'));
+  say(figure(`${name}.recall`, t.recall, 'share'));
+  say(figure(`${name}.false_alarms_per_1000_${per}`, t.falsePerThousand, '1/1000'));
+  say(`diagnosis.${name}.faults ${t.found + t.missed} faults`);
+  say(`diagnosis.${name}.looked_at ${t.lookedAt} ${per}`);
+}
+
+const conductDays = Math.max(1, Math.round(days / 3));
+const conduct = newConductScore();
+for (let n = 0; n < conductDays; n++) {
+  if (n % 12 === 0) progress(`conduct: day ${n + 1} of ${conductDays}`);
+  runConductDay(conductDay(n), n, conduct);
+}
+say(`diagnosis.conduct.plant_days ${conductDays} days`);
+for (const [name, t, inThree, reports] of [
+  ['stuck', conduct.stuck, conduct.stuckInThree, conduct.stuckReports],
+  [
+    'not_shutting_down',
+    conduct.notShuttingDown,
+    conduct.notShuttingDownInThree,
+    conduct.notShuttingDownReports,
+  ],
+] as const) {
+  tally(name, t, 'unit_days');
+  say(figure(`${name}.recall_within_3_reports`, inThree.value, 'share'));
+  say(figure(`${name}.median_time_to_detect`, middle(t.delays), 's', 0));
+  say(figure(`${name}.median_reports_to_detect`, middle(reports), 'reports', 1));
+}
+tally('stuck.shutdown_only', conduct.stuckStrings, 'string_days');
+tally('not_shutting_down.shutdown_only', conduct.notShuttingDownStrings, 'string_days');
+say(figure('cause.right', conduct.cause.value, 'share'));
+say(`diagnosis.cause.faults ${conduct.cause.all} faults`);
+for (const line of aim('cause.right', conduct.cause.value, 0.95, 'See the wrong ones:')) say(line);
+for (const line of conduct.wrongCauses.slice(0, 20)) say(`# ${line}`);
+if (verbose) for (const line of conduct.oddities.slice(0, 60)) say(`# ${line}`);
