@@ -242,12 +242,12 @@ describe('at night', () => {
   it('units whose frames stop while the inverters report on are dark: not silent, and no longer passing', async () => {
     const i = 4;
     const { name } = rosterString(i);
-    await send(i, nowS() - 3 * 3600, 1);
     await leave(world);
     await world.db.owner.query(
       'update site set longitude = case when longitude > 0 then longitude - 180 else longitude + 180 end',
     );
     world = await enter(world.db, world.site);
+    await send(i, nowS() - 3 * 3600, 1);
     const [inverter] = world.logger.roster.inverters;
     await world.logger.durable({
       type: 'inputs',
