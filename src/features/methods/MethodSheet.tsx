@@ -1,7 +1,7 @@
 import type { ReactNode } from 'react';
 import { Sheet } from '../../components/ui/Sheet';
 import { Formula } from './math';
-import type { Note } from './notes';
+import type { Note } from './note';
 
 /** One judgement: what it computes, the formula, its source, its limits; the live example comes as children. */
 export function MethodSheet({ note, children }: { note: Note; children?: ReactNode }) {

@@ -2,7 +2,6 @@ import { forecastRollCall } from '../../domain/commissioning/roll-call';
 import { judgeShutdownTest, type ShutdownTestInput } from '../../domain/commissioning/shutdown-test';
 import { judgeOutput } from '../../domain/output/low-output';
 import { planeReference, type PlaneSeries, type StringSeries } from '../../domain/output/plane-reference';
-import { UNIT_PRESETS } from '../../domain/equipment/unit-type';
 import { timeLimitOf } from '../../domain/verdicts/context';
 import { number, percent, quantity } from '../../drawings/numbers';
 import type { Example } from './example';
@@ -234,6 +233,3 @@ export const lowOutputExample: Example = {
     };
   },
 };
-
-/** Shutdown voltage that presets start from, for the notes. */
-export const NOMINAL_SHUTDOWN_V = UNIT_PRESETS.shutdown_only.shutdownVoltage.nominal;

@@ -83,7 +83,7 @@ export function AnswerSheet({ answer, question, waiting, faults }: Props) {
       </div>
       {answer.helped.length > 0 && (
         <div className="mt-3 border-t border-rule-faint pt-3">
-          <h3 className="font-semibold">What helped</h3>
+          <h3 className="font-semibold">What each thing known brought</h3>
           <ul className="text-ink-2">
             {answer.helped.map((help) => {
               const { name, words } = helpWords(help);

@@ -37,7 +37,7 @@ export function scaleOf(answer: Interpretation, question: ReadingQuestion): Scal
     : fits(module)
       ? [module, 'about one module in bright light']
       : [NICE.find((n) => span / n <= 12) ?? 500, ''];
-  const first = Math.min(0, Math.floor(lowest / step - 1e-9));
+  const first = Math.min(0, Math.floor(lowest / step + 1e-9));
   const last = Math.max(1, Math.ceil(highest / step + 0.05));
   const from = first * step;
   const width = (last - first) * step;
