@@ -66,6 +66,8 @@ describe('light', () => {
     const spans = lightSpans(elevation, 0, 4000, 100);
     expect(spans.map((s) => s.light)).toEqual(['dark', 'dim', 'light']);
     expect(lightAt(spans, 1100).light).toBe('dim');
+    // bounds are exact however coarse the look
+    expect(lightSpans(elevation, 0, 4000, 300).map((s) => s.sinceS)).toEqual([0, 1000, 1600]);
     expect(lightAt([], 5)).toEqual({ sinceS: 0, light: 'light' });
     expect(lightSpans(elevation, 0, 4000, 100, () => 20).map((s) => s.light)).toEqual(['dark', 'dim']);
   });

@@ -151,7 +151,8 @@ export const DARK_BELOW_ELEVATION = 0;
 export const DIM_BELOW_ELEVATION = 6;
 
 /**
- * Spans of light from the sun's elevation (degrees) sampled every `stepS` from `fromS` to `toS`; `poaGlobal`
+ * Spans of light from the sun's elevation (degrees) looked at every `stepS` from `fromS` to `toS`, their bounds found
+ * to the second; `poaGlobal`
  * (W/m²), where it is measured, can only make it darker.
  */
 export function lightSpans(
@@ -161,17 +162,26 @@ export function lightSpans(
   stepS = 300,
   poaGlobal?: (atS: number) => number | null,
 ): LightSpan[] {
-  const spans: LightSpan[] = [];
-  for (let atS = fromS; atS <= toS; atS += stepS) {
+  const lightOf = (atS: number): Light => {
     const up = elevation(atS);
     const poa = poaGlobal?.(atS) ?? null;
-    const light: Light =
-      up < DARK_BELOW_ELEVATION
-        ? 'dark'
-        : up < DIM_BELOW_ELEVATION || (poa !== null && poa < 40)
-          ? 'dim'
-          : 'light';
-    if (spans.at(-1)?.light !== light) spans.push({ sinceS: atS, light });
+    if (up < DARK_BELOW_ELEVATION) return 'dark';
+    return up < DIM_BELOW_ELEVATION || (poa !== null && poa < 40) ? 'dim' : 'light';
+  };
+  const spans: LightSpan[] = [];
+  for (let atS = fromS; atS <= toS; atS += stepS) {
+    const light = lightOf(atS);
+    const last = spans.at(-1);
+    if (last?.light === light) continue;
+    // to the second within the step: a grace begins here, and reports come more often than samples
+    let before = last === undefined ? atS : atS - stepS;
+    let from = atS;
+    while (from - before > 1) {
+      const middle = Math.floor((before + from) / 2);
+      if (lightOf(middle) === light) from = middle;
+      else before = middle;
+    }
+    spans.push({ sinceS: from, light });
   }
   return spans;
 }

@@ -1,4 +1,4 @@
-import { COMMANDS, type EventKind, type InForce } from './codes';
+import { COMMANDS, EVENT_KINDS, type EventKind, type InForce } from './codes';
 
 /** What an event says, in one line, for lists, charts and mail. */
 export type EventTone = 'rust' | 'crimson' | 'plum' | 'slate' | 'petrol';
@@ -8,16 +8,48 @@ export interface EventWords {
 }
 type Detail = Readonly<Record<string, unknown>>;
 
+/** What each kind of event is called where one chooses among them. */
+export const KIND_WORDS: Record<EventKind, string> = {
+  units_stuck: 'Stuck in shutdown',
+  units_not_shutting_down: 'Not shutting down',
+  units_unconfirmed: 'Shutdown unconfirmed',
+  units_recovered: 'Recovered',
+  units_silent: 'Fell silent',
+  units_back: 'Heard again',
+  units_heard: 'First heard',
+  string_finding: 'String finding',
+  string_finding_ended: 'String finding ended',
+  command: 'Command',
+  inverter_status: 'Inverter status',
+  logger_connected: 'Logger connected',
+  logger_lost: 'Logger lost',
+  gateway_silent: 'Gateway silent',
+  gateway_back: 'Gateway heard again',
+  roll_call_started: 'Roll call started',
+  roll_call_stopped: 'Roll call stopped',
+  roster_changed: 'Roster changed',
+  hazard_acknowledged: 'Hazard taken on',
+};
+/** The kinds to choose among, by their words. */
+export const KINDS = EVENT_KINDS.map((value) => ({ value, label: KIND_WORDS[value] })).sort((a, b) =>
+  a.label.localeCompare(b.label),
+);
+
 const text = (detail: Detail, key: string): string => (typeof detail[key] === 'string' ? detail[key] : '');
 const positionsOf = (detail: Detail): number[] =>
   Array.isArray(detail.positions) ? detail.positions.filter((p): p is number => typeof p === 'number') : [];
 
-/** "Position 5", "Positions 5 and 9", "14 units"; without positions "Units". */
+const NAMED_MAX = 8;
+
+/** "Position 5", "Positions 5 and 9", "14 units"; without positions the count of serials, or "Units". */
 function unitsOf(detail: Detail): { subject: string; many: boolean } {
   const at = positionsOf(detail);
+  const serials = Array.isArray(detail.serials) ? detail.serials.length : 0;
+  if (at.length === 0 && serials > 0)
+    return { subject: serials === 1 ? 'One unit' : `${serials} units`, many: serials > 1 };
   if (at.length === 0) return { subject: 'Units', many: true };
   if (at.length === 1) return { subject: `Position ${at[0]}`, many: false };
-  if (at.length > 4) return { subject: `${at.length} units`, many: true };
+  if (at.length > NAMED_MAX) return { subject: `${at.length} units`, many: true };
   return { subject: `Positions ${at.slice(0, -1).join(', ')} and ${at.at(-1)}`, many: true };
 }
 
@@ -39,10 +71,17 @@ const INVERTER_WORDS: Record<string, string> = {
 /** What is in force, as it stands at the beginning of a line. */
 export const commandWords = (inForce: InForce): string => COMMAND_WORDS[inForce];
 
+const RECOVERED_FROM: Record<string, [one: string, many: string]> = {
+  stuck: ['passes again', 'pass again'],
+  not_shutting_down: ['has shut down', 'have shut down'],
+  unconfirmed: ['is confirmed', 'are confirmed'],
+};
+
 /** One line for one event; what a detail lacks is left out, never guessed. */
 export function eventWords(kind: EventKind, detail: Detail): EventWords {
   const { subject, many } = unitsOf(detail);
   const is = many ? 'are' : 'is';
+  const behind = Number(detail.units ?? 0);
   const at = (key: string, before = ' '): string =>
     text(detail, key) ? `${before}${text(detail, key)}` : '';
   switch (kind) {
@@ -53,7 +92,10 @@ export function eventWords(kind: EventKind, detail: Detail): EventWords {
     case 'units_unconfirmed':
       return { words: `Shutdown of ${subject.toLowerCase()} is not confirmed`, tone: 'slate' };
     case 'units_recovered':
-      return { words: `${subject} ${is} right again`, tone: 'petrol' };
+      return {
+        words: `${subject} ${RECOVERED_FROM[text(detail, 'from')]?.[many ? 1 : 0] ?? `${is} right again`}`,
+        tone: 'petrol',
+      };
     case 'units_silent':
       return { words: `${subject} fell silent`, tone: 'slate' };
     case 'units_back':
@@ -73,7 +115,7 @@ export function eventWords(kind: EventKind, detail: Detail): EventWords {
       const where = text(detail, 'zone') || text(detail, 'transmitter');
       if (!inForce) return { words: 'A command came in force', tone: 'slate' };
       return {
-        words: `${commandWords(inForce)}${where ? `, ${where}` : ''}`,
+        words: `${commandWords(inForce)}${where ? `, ${where}` : ''}${at('saidBy', ', by ')}`,
         tone: inForce === 'released' ? 'petrol' : 'plum',
       };
     }
@@ -86,16 +128,25 @@ export function eventWords(kind: EventKind, detail: Detail): EventWords {
     case 'logger_lost':
       return { words: `The logger${at('logger')} stopped reporting`, tone: 'slate' };
     case 'gateway_silent':
-      return { words: `${text(detail, 'gateway') || 'A gateway'} fell silent`, tone: 'slate' };
+      return {
+        words: `${text(detail, 'gateway') || 'A gateway'} fell silent${behind > 0 ? `, ${behind} ${behind === 1 ? 'unit' : 'units'} behind it` : ''}`,
+        tone: 'slate',
+      };
     case 'gateway_back':
       return { words: `${text(detail, 'gateway') || 'A gateway'} is heard again`, tone: 'petrol' };
     case 'roll_call_started':
-      return { words: `Roll call started${at('person', ' by ')}`, tone: 'petrol' };
+      return {
+        words: `Roll call started${at('person', ' by ')}${at('personOnSite', ', on site: ')}`,
+        tone: 'petrol',
+      };
     case 'roll_call_stopped':
       return { words: `Roll call stopped${at('person', ' by ')}`, tone: 'slate' };
     case 'roster_changed':
       return { words: 'The as-built was changed', tone: 'slate' };
     case 'hazard_acknowledged':
-      return { words: `${text(detail, 'person') || 'Somebody'} acknowledged a hazard`, tone: 'slate' };
+      return {
+        words: `${text(detail, 'person') || 'Somebody'} took on: ${text(detail, 'headline') || 'a hazard'}`,
+        tone: 'slate',
+      };
   }
 }

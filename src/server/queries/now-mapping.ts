@@ -169,6 +169,8 @@ function expectationOf(own: Measured, around: Around): Expected | null {
   const others = all.filter(
     (m) =>
       m !== own &&
+      // an inverter at its limit raises the voltage of all its inputs: another's strings are no yardstick
+      m.row.inverter === own.row.inverter &&
       m.row.planeId === own.row.planeId &&
       m.row.moduleTypeId === own.row.moduleTypeId &&
       m.underLoad === own.underLoad &&

@@ -79,7 +79,7 @@ export class Watch {
         serials: s.slots.map((slot) => slot.serial),
         context,
         memory: newMemory(context),
-        via: s.slots.map(() => null),
+        via: s.slots.map((slot) => slot.gateway), // as yesterday
         heardNow: new Uint8Array(s.slots.length),
       };
     });
@@ -218,7 +218,7 @@ export class Watch {
       module: moduleTypeOf(plan),
       underLoad: mine.underLoad,
       otherStrings: this.strings.flatMap((s) => {
-        if (s === own) return [];
+        if (s === own || s.plan.inverter !== own.plan.inverter) return [];
         const m = measured(s);
         return m.underLoad === mine.underLoad && m.typical !== null ? [m.typical] : [];
       }),
