@@ -1,10 +1,10 @@
 import { useInfiniteQuery } from '@tanstack/react-query';
 import { useState } from 'react';
-import { eventInWords, KINDS } from '../../components/events/words';
 import { Button } from '../../components/ui/Button';
 import { Notice } from '../../components/ui/Notice';
 import { Sheet } from '../../components/ui/Sheet';
 import { SiteTime } from '../../components/ui/Time';
+import { eventWords, KINDS } from '../../domain/verdicts/event-words';
 import { duration } from '../../drawings/times';
 import { queryClient } from '../../lib/query-client';
 import type { EventItem } from '../../schemas/api/now';
@@ -41,7 +41,7 @@ function Line({
             :{' '}
           </>
         )}
-        {eventInWords(event)}
+        {eventWords(event.kind, event.detail).words}
         {lateS > LATE_FROM_S && (
           <span className="text-sm text-ink-2"> (reported {duration(lateS)} later)</span>
         )}
