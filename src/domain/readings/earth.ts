@@ -17,6 +17,8 @@ export interface EarthFinding {
 const PRIOR = 0.01;
 /** Of the string's voltage, what leakage and stray charge show to earth on a sound string: standard deviation. */
 const SOUND_SPREAD = 0.12;
+/** Beyond three standard deviations of that a string is not said to float. */
+const FLOATS_WITHIN = 3 * SOUND_SPREAD;
 /** Spread of a module's voltage against its neighbours', relative. */
 const MISMATCH = 0.01;
 
@@ -59,8 +61,14 @@ export function earthFinding(question: ReadingQuestion, alike: boolean): EarthFi
   const placeProbability = faulty === 0 ? 0 : places[k]! / faulty;
   // one of the two alone may be small because the fault is at that very end
   const taken = positive !== null && negative !== null;
+  // far from what leakage shows, but at no place of the model either (units not alike, readings not settled)
+  const floats = [positive, negative].every((x) => x !== null && Math.abs(x) <= FLOATS_WITHIN * u);
   const outcome =
-    taken && probability >= 0.8 ? 'fault' : taken && probability <= 0.05 ? 'no_fault_seen' : 'cant_tell';
+    taken && probability >= 0.8
+      ? 'fault'
+      : taken && floats && probability <= 0.05
+        ? 'no_fault_seen'
+        : 'cant_tell';
   if (outcome !== 'fault')
     return {
       outcome,
