@@ -4,7 +4,7 @@ import { log } from '../log';
 import { CHANNELS, changedPayloads, sendNotices } from '../queries/live-notices';
 
 /** Gathers what changed for a moment and tells it in one go: a fleet reports in bursts. */
-const GATHER_MS = 25;
+const GATHER_MS = 10;
 
 export class Notices {
   private sites = new Set<number>();

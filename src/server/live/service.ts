@@ -11,7 +11,7 @@ import { Repeated } from './repeated';
 import { readNews, readOverviews, type Delta } from './round';
 
 /** After a wake-up so long is waited for more to come with it. */
-const GATHER_MS = 20;
+const GATHER_MS = 10;
 /** Site lines, inverters and causes are sent at most so often. */
 const OVERVIEW_EVERY_MS = 500;
 /** Every listener hears something this often, if only that the connection stands; it also makes lost wake-ups good. */

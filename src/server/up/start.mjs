@@ -223,7 +223,7 @@ export function start(args, { atEnd }) {
   return bringUpDemo(args, atEnd, {
     prepare: buildIfStale,
     launchSite: (env) => {
-      const site = launch(process.execPath, ['src/server/serve.mjs'], {
+      const site = launch(process.execPath, ['--max-semi-space-size=64', 'src/server/serve.mjs'], {
         cwd: root,
         env: { ...env, NODE_ENV: 'production' },
         stdio: ['ignore', 'pipe', 'pipe', 'ipc'],

@@ -7,12 +7,11 @@ export interface Served {
 
 /** The built site in a process of its own, with the roles given. */
 export async function serve(port: number, roles: string): Promise<Served> {
-  const child: ChildProcess = fork(process.env.BENCH_SERVER ?? 'src/server/serve.mjs', {
+  // started as `npm start` starts it
+  const child: ChildProcess = fork('src/server/serve.mjs', {
     env: { ...process.env, PORT: String(port), HOST: '127.0.0.1', WAKELINE_ROLES: roles },
     stdio: ['ignore', 2, 2, 'ipc'],
-    execArgv: process.env.BENCH_PROF
-      ? ['--import', 'tsx', '--cpu-prof', '--cpu-prof-dir=/tmp/prof']
-      : process.execArgv,
+    execArgv: ['--max-semi-space-size=64'],
   });
   await new Promise<void>((resolve, reject) => {
     child.once('message', () => resolve());
