@@ -73,6 +73,8 @@ try {
     figure('ingest.events', got.events, 'rows', 0);
     figure('ingest.ratio_to_copy', rate / copyRate, 'ratio');
     for (const l of loggers) l.close();
+    // a fleet that has run for a while has statistics: autovacuum would make them within minutes
+    await db.query('analyze');
     await measureLive({ db, plant, port: PORT, say, figure });
   } finally {
     await server.stop();
