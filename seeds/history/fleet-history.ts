@@ -117,7 +117,7 @@ export async function seedHistory(
     }
   }
   await writeNewestRows(tx);
-  await writeLastHeard(tx, plant, histories);
+  await writeLastHeard(tx, histories);
   await tx.raw(
     `insert into rollup_watermark (quarter) values (date_bin('15 min', to_timestamp(?), '2000-01-01Z'))
      on conflict (only_row) do update set quarter = excluded.quarter`,

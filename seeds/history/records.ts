@@ -3,7 +3,7 @@ import { keyOf, uniform } from '../../simulator/chance';
 import { firstReleasedS } from '../../simulator/plant/commands';
 import type { FleetPlan } from '../../simulator/plant/plan';
 import { insertRows, known } from '../plant/rows';
-import type { SeededPlant, SeededSite } from '../plant/seeded';
+import type { SeededSite } from '../plant/seeded';
 import type { SiteHistory } from './site-history';
 import { maskOf, sumsOf } from './site-history';
 
@@ -251,7 +251,7 @@ export async function writeShutdownTests(
 }
 
 /** When loggers and gateways were last heard, by the newest frames. */
-export async function writeLastHeard(db: Knex, plant: SeededPlant, histories: SiteHistory[]): Promise<void> {
+export async function writeLastHeard(db: Knex, histories: SiteHistory[]): Promise<void> {
   for (const history of histories) {
     const { site } = history;
     const byGateway = new Map<number, number>();

@@ -61,7 +61,7 @@ export class SitePlant {
     readonly plan: SitePlan,
     types: { modules: readonly ModuleType[]; units: readonly UnitType[] },
     readonly seed: number,
-    private readonly since: number,
+    since: number,
     /** Epoch seconds from which the site is looked at. */
     fromS: number,
   ) {

@@ -29,7 +29,7 @@ function day(
     const common = options.clear ? 1 : 0.4 + 0.3 * Math.sin(q / 9) ** 2;
     local.forEach((x, i) => {
       local[i] = options.clear || options.alike === true ? 0 : 0.85 * x + triangular(0.04);
-      truth[i]![q] = 10 * sun * common * level[i]! * (1 + local[i]!);
+      truth[i]![q] = 10 * sun * common * level[i]! * (1 + local[i]);
     });
   }
   return truth.map((_, i) => ({

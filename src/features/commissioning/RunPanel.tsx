@@ -1,4 +1,4 @@
-import { useState, type FormEvent } from 'react';
+import { useState, type SubmitEvent } from 'react';
 import { useMutation } from '@tanstack/react-query';
 import { Button } from '../../components/ui/Button';
 import { Field } from '../../components/ui/Field';
@@ -46,7 +46,7 @@ function Start({ page, onChanged }: Pick<Props, 'page' | 'onChanged'>) {
     },
     queryClient(),
   );
-  const submit = (event: FormEvent) => {
+  const submit = (event: SubmitEvent) => {
     event.preventDefault();
     const faults = {
       name: personOnSite.trim().length < 2 ? 'Enter the name of the person who is on site.' : undefined,

@@ -69,7 +69,7 @@ export function MeterPanel({ form, faults, place, typed, choose }: PanelProps & 
           type="button"
           aria-label="Change the sign"
           onClick={() => key('sign')}
-          className="h-12 w-12 shrink-0 rounded border border-rule bg-sheet text-2xl"
+          className="h-[48px] w-[48px] shrink-0 rounded border border-rule bg-sheet text-2xl"
         >
           ±
         </button>
@@ -78,7 +78,7 @@ export function MeterPanel({ form, faults, place, typed, choose }: PanelProps & 
           aria-label="Number pad"
           aria-expanded={pad}
           onClick={() => setPad(!pad)}
-          className="h-12 w-12 shrink-0 rounded border border-rule bg-sheet lg:hidden"
+          className="h-[48px] w-[48px] shrink-0 rounded border border-rule bg-sheet lg:hidden"
         >
           <PadMark />
         </button>

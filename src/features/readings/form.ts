@@ -164,7 +164,7 @@ export function readForm(form: ReadingForm): Read {
   const voltageV = optional('v', 'Reading + to −', RANGES.volts);
   const positiveV = optional('pe', 'Reading + to earth', RANGES.volts);
   const negativeV = optional('ne', 'Reading − to earth', RANGES.volts);
-  const conditions = readConditions(form, optional, faults);
+  const conditions = readConditions(optional, faults);
   const siblings = othersOf(form.others).flatMap((other, i): SiblingReading[] => {
     if (other.units.trim() === '' && other.volts.trim() === '') return [];
     const its = number(`others.${i}.units`, other.units, 'Units of the other string', RANGES.units);
@@ -216,7 +216,6 @@ function readModule(form: ReadingForm, number: ReadNumber): ModuleType | null {
 }
 
 function readConditions(
-  form: ReadingForm,
   optional: (key: string, name: string, range: NumberRange) => number | null,
   faults: Faults,
 ): Conditions | null {
