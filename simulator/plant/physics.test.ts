@@ -139,3 +139,24 @@ describe('a plant looked at for the first time', () => {
     }
   });
 });
+
+describe('shade that somebody put up', () => {
+  it('is gone when its hours are over', () => {
+    const place = plantOf('Beacon Street Flats').plan;
+    const hour = ((((SINCE + place.longitude * 240) % 86_400) + 86_400) % 86_400) / 3600;
+    const plant = plantOf('Beacon Street Flats', SINCE, [
+      {
+        kind: 'shade',
+        string: 'A1',
+        positions: [1, 2, 3],
+        fromHour: hour - 0.2,
+        toHour: hour + 0.2,
+        share: 0.8,
+      },
+    ]);
+    const s = stringOf(plant, 'A1');
+    expect(Array.from(s.shadedGroups.slice(0, 4))).toEqual([3, 3, 3, 0]);
+    plant.step(SINCE + 1800);
+    expect(s.shadedGroups.every((g) => g === 0)).toBe(true);
+  });
+});

@@ -24,7 +24,8 @@ export function setShade(
   const shades = ofKind(faults, 'shade').filter(
     (f) => f.string === s.plan.name && solarHour >= f.fromHour && solarHour < f.toHour,
   );
-  if (shades.length === 0 && obstacles.length === 0) return;
+  const none = shades.length === 0 && obstacles.length === 0;
+  if (none && s.shadedGroups.every((g) => g === 0)) return;
   s.shadedGroups.fill(0);
   s.shadeLoss.fill(0);
   if (now.elevation <= 1) return;

@@ -36,6 +36,16 @@ describe('a string among its siblings', () => {
     expect(finding.signature!.figures.voltageRatio).toBeNull();
     expect(finding.signature!.couldBe.join()).toContain('disconnected');
   });
+  it('is low on a day of much scatter too, by the spread of all days', () => {
+    const plane = oneFault({ kind: 'units_missing', count: 2 });
+    const reference = planeReference(plane);
+    reference.z[4]!.fill(-2.8);
+    expect(judgeOutput(plane, reference, 4).outcome).toBe('low');
+    // but not where the strings differ so much every day, nor where that day has worse
+    expect(judgeOutput(plane, { ...reference, spread: 0.06 }, 4).outcome).toBe('as_expected');
+    reference.z[4]!.fill(-1.5);
+    expect(judgeOutput(plane, reference, 4).outcome).toBe('as_expected');
+  });
   it('is not blamed for curtailed afternoons and counts what it left out', () => {
     const finding = judge(oneFault({ kind: 'none' }, { curtailed: true }), 4);
     expect(finding.outcome).toBe('as_expected');

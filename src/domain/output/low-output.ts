@@ -24,6 +24,11 @@ export interface OutputFinding {
 
 /** Modified z above which a value is an outlier: Iglewicz & Hoaglin 1993. */
 export const Z_LIMIT = 3.5;
+/**
+ * On a day on which the strings differ much, so far out is enough if it is `Z_LIMIT` by the spread of all days: the
+ * spread of some ten strings on one day is itself uncertain by a quarter. From experience.
+ */
+const Z_LIMIT_OF_DAY = 2;
 /** Less than this is within what modules differ by: IEC 62446-1 compares strings to 5 %. */
 export const LOSS_MIN = 0.05;
 export const DAYS_LOOKED_AT = 5;
@@ -36,7 +41,7 @@ const NINETY = 1.645;
 
 /**
  * Judges string `index` of a plane over its last five days with enough sun, three of which must be low: among at least
- * five siblings by the modified z-score of each day's ratio, otherwise against the model with a wide band.
+ * five siblings by the modified z-score of each day's ratio (by that day's spread, or by that of all days), otherwise against the model with a wide band.
  * Days before `untilDay` (exclusive) count.
  */
 export function judgeOutput(
@@ -61,7 +66,9 @@ export function judgeOutput(
       ? MODEL_SD.fresh
       : MODEL_SD.withPast;
   const limit = bySiblings ? 1 - LOSS_MIN : usual - Math.max(LOSS_MIN, Z_LIMIT * sd);
-  const isLow = (d: number): boolean => ratio[d]! < limit && (!bySiblings || z[d]! < -Z_LIMIT);
+  const isOut = (d: number): boolean =>
+    z[d]! < -Z_LIMIT || (z[d]! < -Z_LIMIT_OF_DAY && ratio[d]! - 1 < -Z_LIMIT * reference.spread);
+  const isLow = (d: number): boolean => ratio[d]! < limit && (!bySiblings || isOut(d));
   const low = looked.filter(isLow);
   const base = {
     method: reference.method,

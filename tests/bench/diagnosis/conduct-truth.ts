@@ -9,8 +9,13 @@ export const NOT_MEASURED_BELOW = 0.5;
 const RELEASE_TAKES_S = 30;
 const TIME_LIMIT_S = 30;
 
+/** Degrees by which a logger's clock that is off may move dawn. */
+const DAWN_MARGIN = 1;
+
 export interface StringTruth {
   stuck: boolean[];
+  /** The same within a degree of dawn, where a clock that is off decides: said then, it is right and not early. */
+  nearlyStuck: boolean[];
   keeps: boolean[];
 }
 
@@ -26,7 +31,7 @@ export function stringTruth(
   releasedSinceS: number | undefined,
 ): StringTruth {
   const s = plant.byName.get(plan.name)!;
-  const daylight = plant.now.elevation >= DIM_BELOW_ELEVATION;
+  const { elevation } = plant.now;
   const sends =
     s.unitType.releasedBy === 'logger' || plan.transmitters.some((t) => plant.commands.transmits(t));
   const released =
@@ -37,7 +42,10 @@ export function stringTruth(
   const shut = openSinceS !== undefined && plant.atS > openSinceS + TIME_LIMIT_S;
   const modes = [...s.mode];
   return {
-    stuck: modes.map((m) => released && daylight && m === SHUTDOWN),
+    stuck: modes.map((m) => released && elevation >= DIM_BELOW_ELEVATION && m === SHUTDOWN),
+    nearlyStuck: modes.map(
+      (m) => released && elevation >= DIM_BELOW_ELEVATION - DAWN_MARGIN && m === SHUTDOWN,
+    ),
     keeps: modes.map((m) => shut && m === PASSING),
   };
 }

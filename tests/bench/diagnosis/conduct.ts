@@ -53,8 +53,10 @@ class Course {
   saidReports = NaN;
   falseS = NaN;
   mostReports = 0;
+  private nearly = false;
 
-  so(is: boolean, heard: boolean, atS: number): void {
+  so(is: boolean, heard: boolean, atS: number, nearly = false): void {
+    this.nearly = nearly;
     if (!is) {
       this.reports = 0;
       this.sinceS = NaN;
@@ -67,10 +69,10 @@ class Course {
   }
 
   said(atS: number): void {
-    if (Number.isNaN(this.sinceS)) {
+    if (Number.isNaN(this.sinceS) && !this.nearly) {
       if (Number.isNaN(this.falseS)) this.falseS = atS;
     } else if (Number.isNaN(this.saidS)) {
-      this.saidS = atS - this.sinceS;
+      this.saidS = this.nearly && Number.isNaN(this.sinceS) ? 0 : atS - this.sinceS;
       this.saidReports = this.reports;
     }
   }
@@ -144,12 +146,12 @@ export function runConductDay(day: ConductDay, n: number, score: ConductScore): 
       if (!tellsNothing) {
         for (let i = 0; i < s.serials.length; i++) {
           const heard = regular && s.heardNow[i] === 1;
-          c.stuck[i]!.so(truth.stuck[i]!, heard, plant.atS);
+          c.stuck[i]!.so(truth.stuck[i]!, heard, plant.atS, truth.nearlyStuck[i]);
           c.keeps[i]!.so(truth.keeps[i]!, heard, plant.atS);
         }
         return;
       }
-      c.stuck[0]!.so(truth.stuck.some(Boolean), regular, plant.atS);
+      c.stuck[0]!.so(truth.stuck.some(Boolean), regular, plant.atS, truth.nearlyStuck.some(Boolean));
       c.keeps[0]!.so(keepsOnInput(s, watch.strings), regular, plant.atS);
     });
   };

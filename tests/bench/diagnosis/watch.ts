@@ -260,7 +260,7 @@ export class Watch {
           verdict: VERDICTS[s.memory.verdict[i]!] ?? 'ok',
           sinceS: s.memory.since[i]!,
           seenS: s.memory.seen[i] || null,
-          gateway: s.via[i] == null ? null : (names.get(s.via[i]!) ?? null),
+          gateway: s.via[i] == null ? null : (names.get(s.via[i]) ?? null),
         })),
         finding: s.memory.finding,
       })),
