@@ -21,6 +21,7 @@ import {
   aloud,
   cautionParts,
   chance,
+  hueOf,
   initiatorWords,
   outcomeWords,
   reasoning,
@@ -164,6 +165,16 @@ describe('what is said', () => {
   it('full voltage though the keep-alive is off speaks against the initiator', () => {
     const { answer, question } = askedOf({ v: '480' });
     expect(initiatorWords(answer, question)).toMatch(/^The reading speaks against it/);
+  });
+  it('crimson is for units that pass though they should not, never for too few that pass', () => {
+    const unheard = askedOf({ kind: 'monitored', commanded: 'shutdown', v: '440' });
+    const hues = unheard.answer.hypotheses
+      .filter((h) => h.kind === 'some_passing' || h.kind === 'all_passing')
+      .map((h) => hueOf(h, unheard.question));
+    expect(hues.length).toBeGreaterThan(1);
+    expect(hues).not.toContain('crimson');
+    const held = askedOf({ v: '480' });
+    expect(hueOf(held.answer.hypotheses[0]!, held.question)).toBe('crimson');
   });
   it('whatever is read: a caution, no certainty, no word that it is safe, a ruler that holds the reading', () => {
     fc.assert(

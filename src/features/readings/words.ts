@@ -55,13 +55,14 @@ export function outcomeWords(answer: Interpretation): string {
 }
 
 export type Hue = 'petrol' | 'plum' | 'rust' | 'crimson' | 'slate';
-/** Colour by what an explanation says of the units; crimson only where they pass though they should not. */
+/** Colour by what an explanation says of the units; crimson only where more pass than should. */
 export function hueOf(h: RankedHypothesis, question: ReadingQuestion): Hue {
+  const { passing } = expectedState(question);
   const passes =
-    h.kind === 'all_passing' ||
-    h.kind === 'some_passing' ||
-    (h.kind === 'wired_past_its_unit' && expectedState(question).passing < question.units);
-  if (passes && !h.asExpected && question.commanded === 'shutdown') return 'crimson';
+    (h.kind === 'all_passing' && passing < question.units) ||
+    (h.kind === 'some_passing' && h.count > passing) ||
+    (h.kind === 'wired_past_its_unit' && passing < question.units);
+  if (passes && question.commanded === 'shutdown') return 'crimson';
   switch (h.kind) {
     case 'all_in_shutdown':
       return h.asExpected || question.commanded !== 'released' ? 'plum' : 'rust';
