@@ -5,7 +5,7 @@ import { isDatabaseAway } from '../errors';
 import { log } from '../log';
 import type { FrameRow } from '../queries/ingest-rows';
 import { takeBatch, type Batch, type Item, type Work } from './batch';
-import { Days, writeBatch, type Written } from './write-batch';
+import { Days, GatewaysHeard, writeBatch, type Written } from './write-batch';
 
 export interface LaneHooks {
   /** After COMMIT and the acknowledgements. What it gives is waited for before the next batch. */
@@ -35,7 +35,8 @@ export class Lane {
   private readonly queue: Item[] = [];
   private running: Promise<void> | undefined;
   private client: pg.Client | undefined;
-  private days = new Days();
+  private readonly days = new Days();
+  private readonly gateways = new GatewaysHeard();
   private daysAtS = 0;
   private stopping = false;
   private cut = new AbortController();
@@ -126,7 +127,7 @@ export class Lane {
       await this.days.refresh(this.client, nowS);
       this.daysAtS = nowS;
     }
-    return writeBatch(this.client, batch, this.days, nowS);
+    return writeBatch(this.client, batch, this.days, this.gateways, nowS);
   }
 
   private async dropClient(): Promise<void> {

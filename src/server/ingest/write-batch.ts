@@ -45,6 +45,28 @@ export class Days {
   }
 }
 
+/** How far the time at which a gateway was last heard may lag behind, seconds. */
+const GATEWAY_LAG_S = 15;
+
+/** Which gateways were written down as heard, and when: most batches say nothing new of them. */
+export class GatewaysHeard {
+  private readonly at = new Map<string, number>();
+
+  news(rows: Batch['gateways']): Batch['gateways'] {
+    return rows.filter((r) => {
+      const known = this.at.get(`${r.loggerId} ${r.number}`);
+      return known === undefined || r.heardAt >= known + GATEWAY_LAG_S;
+    });
+  }
+
+  told(rows: Batch['gateways']): void {
+    for (const r of rows) {
+      const key = `${r.loggerId} ${r.number}`;
+      this.at.set(key, Math.max(r.heardAt, this.at.get(key) ?? 0));
+    }
+  }
+}
+
 export interface Written {
   /** Sites where something other than frames changed, and strings whose frames or traces are new. */
   sites: Set<number>;
@@ -61,11 +83,14 @@ export async function writeBatch(
   client: pg.ClientBase,
   batch: Batch,
   days: Days,
+  gatewaysHeard: GatewaysHeard,
   nowS: number,
 ): Promise<Written> {
   const written: Written = { sites: new Set(), strings: new Set(), contexts: new Set() };
   const { inputs, inverters, weather } = batch;
-  if (batch.gateways.length > 0) await learnGateways(client, batch.gateways);
+  const gateways = gatewaysHeard.news(batch.gateways);
+  if (gateways.length > 0) await learnGateways(client, gateways);
+  gatewaysHeard.told(gateways);
   if (batch.frames.length > 0) {
     const present = batch.frames.filter((f) => days.has(f.at));
     if (present.length < batch.frames.length)

@@ -1,7 +1,7 @@
 import type { CauseNow, SiteNow } from '../../schemas/api/now';
 import type { Change } from '../../schemas/live';
 import { asIngest, type Tx } from '../db/transaction';
-import { eventsBetween, horizon, rollCallOpen, siteByString, type LiveEvent } from '../queries/live';
+import { eventsBetween, horizon, rollCallOpen, type LiveEvent } from '../queries/live';
 import { gatewaysNow, invertersNow, stringsNow } from '../queries/now';
 import { answersOf } from '../queries/roll-call';
 import { sitesNow } from '../queries/sites-now';
@@ -32,24 +32,40 @@ const EVENTS_A_ROUND = 2000;
 const isBelow = (a: string, b: string): boolean => BigInt(a) < BigInt(b);
 const atSite = (l: Listening): number | null => (l.subject.kind === 'fleet' ? null : l.subject.siteId);
 
-/** Strings, events and units heard. Every listener gets a delta, an empty one where nothing concerns it. */
+/**
+ * Strings, events and units heard. Every listener gets a delta, an empty one where nothing concerns it. `held`: some
+ * events may have to be asked for again in a moment.
+ */
 export async function readNews<L extends Listening>(
   listening: readonly L[],
-  strings: ReadonlySet<number>,
-): Promise<Delta<L>[]> {
+  strings: ReadonlyMap<number, number>,
+): Promise<{ deltas: Delta<L>[]; held: boolean }> {
   return asIngest(async (tx) => {
     const at = new Date();
-    const to = await horizon(tx);
+    const { below: to, held } = await horizon(tx);
     const events = await missedEvents(tx, listening, to);
-    const changed = await changedStrings(tx, at, listening, strings);
+    const changed = await changedStrings(tx, at, strings);
     const deltas: Delta<L>[] = [];
     for (const l of listening) {
       const mine = events.filter((e) => concerns(e, l.subject) && !isBelow(e.xid, l.cursor));
       const change = await newsFor(tx, l.subject, mine, changed);
       deltas.push({ to: l, cursor: isBelow(l.cursor, to) ? to : l.cursor, change });
     }
-    return deltas;
+    return { deltas, held };
   });
+}
+
+/** Those of the changed strings that somebody watches: string → site. */
+export function watchedStrings(
+  listening: readonly Listening[],
+  strings: ReadonlyMap<number, number>,
+): Map<number, number> {
+  const whole = new Set<number>();
+  const single = new Set<number>();
+  for (const { subject } of listening)
+    if (subject.kind === 'string') single.add(subject.stringId);
+    else if (subject.kind !== 'fleet') whole.add(subject.siteId);
+  return new Map([...strings].filter(([id, siteId]) => whole.has(siteId) || single.has(id)));
 }
 
 const concerns = (event: LiveEvent, subject: Subject): boolean =>
@@ -64,25 +80,17 @@ async function missedEvents(tx: Tx, listening: readonly Listening[], to: string)
   return eventsBetween(tx, from, to, { siteIds: [...siteIds] }, EVENTS_A_ROUND);
 }
 
-/** The changed strings that somebody watches, by site. */
+/** The changed strings as they are now, by site. */
 async function changedStrings(
   tx: Tx,
   at: Date,
-  listening: readonly Listening[],
-  strings: ReadonlySet<number>,
+  strings: ReadonlyMap<number, number>,
 ): Promise<Map<number, Change['strings']>> {
   const found = new Map<number, Change['strings']>();
-  if (strings.size === 0) return found;
-  const whole = new Set<number>();
-  const watched = new Set<number>();
-  for (const { subject } of listening)
-    if (subject.kind === 'string') watched.add(subject.stringId);
-    else if (subject.kind !== 'fleet') whole.add(subject.siteId);
-  const bySite = new Map<number, number[]>();
-  for (const [stringId, siteId] of await siteByString(tx, [...strings]))
-    if (whole.has(siteId) || watched.has(stringId))
-      bySite.set(siteId, [...(bySite.get(siteId) ?? []), stringId]);
-  for (const [siteId, stringIds] of bySite) found.set(siteId, await stringsNow(tx, at, { stringIds }));
+  for (const siteId of new Set(strings.values())) {
+    const stringIds = [...strings].flatMap(([id, of]) => (of === siteId ? [id] : []));
+    found.set(siteId, await stringsNow(tx, at, { stringIds }));
+  }
   return found;
 }
 

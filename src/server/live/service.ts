@@ -3,17 +3,21 @@ import type { Actor } from '../../domain/access/permissions';
 import { CLOSE_SIGNED_OUT } from '../../schemas/live';
 import { actorOfCookie } from '../auth/sessions';
 import { isDatabaseAway } from '../errors';
+import { asIngest } from '../db/transaction';
 import { log } from '../log';
+import { siteByString } from '../queries/live';
 import { CHANNELS, readChanged } from '../queries/live-notices';
 import { Connection, type Subscription } from './connection';
 import { Listener } from './listener';
 import { Repeated } from './repeated';
-import { readNews, readOverviews, type Delta } from './round';
+import { readNews, readOverviews, watchedStrings, type Delta } from './round';
 
 /** After a wake-up so long is waited for more to come with it. */
 const GATHER_MS = 10;
 /** Site lines, inverters and causes are sent at most so often. */
 const OVERVIEW_EVERY_MS = 500;
+/** Events behind a running transaction are asked for again after this. */
+const HELD_AGAIN_MS = 250;
 /** Every listener hears something this often, if only that the connection stands; it also makes lost wake-ups good. */
 const HEARTBEAT_MS = 15_000;
 const SESSIONS_EVERY_MS = 60_000;
@@ -25,6 +29,10 @@ export class LiveHub {
   private readonly joining = new Set<{ sites: Set<number>; strings: Set<number> }>();
   private sites = new Set<number>();
   private strings = new Set<number>();
+  private eventSites = new Set<number>();
+  private readonly heldSites = new Set<number>();
+  private heldTimer: NodeJS.Timeout | undefined;
+  private readonly siteByString = new Map<number, number>();
   private readonly news = new Repeated(GATHER_MS, GATHER_MS, () => this.sendNews());
   private readonly overviews = new Repeated(GATHER_MS, OVERVIEW_EVERY_MS, () => this.sendOverviews());
   private beat: NodeJS.Timeout | undefined;
@@ -54,6 +62,7 @@ export class LiveHub {
     this.stopping = true;
     clearInterval(this.beat);
     clearInterval(this.sessionTimer);
+    clearTimeout(this.heldTimer);
     for (const { ws } of this.connections) ws.close(1001, 'the server is going away');
     await this.listener.stop();
     await Promise.all([this.news.stop(), this.overviews.stop()]);
@@ -92,7 +101,10 @@ export class LiveHub {
     if (this.connections.size === 0) return;
     const changed =
       channel === CHANNELS.changed ? readChanged(payload) : { sites: [Number(payload)], strings: [] };
-    for (const id of changed?.sites ?? []) this.sites.add(id);
+    for (const id of changed?.sites ?? []) {
+      this.sites.add(id);
+      this.eventSites.add(id);
+    }
     for (const id of changed?.strings ?? []) this.strings.add(id);
     this.wake();
   }
@@ -110,20 +122,52 @@ export class LiveHub {
   }
 
   private async sendNews(): Promise<void> {
-    const { strings, everything } = this;
+    const { strings, everything, eventSites } = this;
     this.strings = new Set();
+    this.eventSites = new Set();
     this.everything = false;
     for (const missed of this.joining) for (const id of strings) missed.strings.add(id);
     const listening = this.listening();
     if (listening.length === 0) return;
     try {
-      this.send(await readNews(listening, strings), everything);
+      const watched = watchedStrings(listening, await this.sitesOf(strings));
+      const events = listening.some((l) => l.subject.kind !== 'fleet' && eventSites.has(l.subject.siteId));
+      if (!everything && !events && watched.size === 0) return;
+      const { deltas, held } = await readNews(listening, watched);
+      this.send(deltas, everything);
+      if (held && events) this.askAgain(eventSites);
     } catch (error) {
       // nothing was sent: the next round tells it
       for (const id of strings) this.strings.add(id);
+      for (const id of eventSites) this.eventSites.add(id);
       this.everything ||= everything;
       throw error;
     }
+  }
+
+  /** Events that wait for a running transaction are asked for again soon. */
+  private askAgain(sites: ReadonlySet<number>): void {
+    clearTimeout(this.heldTimer);
+    for (const id of sites) this.heldSites.add(id);
+    this.heldTimer = setTimeout(() => {
+      for (const id of this.heldSites) this.eventSites.add(id);
+      this.heldSites.clear();
+      this.wake();
+    }, HELD_AGAIN_MS);
+  }
+
+  /** The sites of strings; a string never moves to another site, so what was learned stays. */
+  private async sitesOf(strings: ReadonlySet<number>): Promise<Map<number, number>> {
+    const unknown = [...strings].filter((id) => !this.siteByString.has(id));
+    if (unknown.length > 0)
+      for (const [id, site] of await asIngest((tx) => siteByString(tx, unknown)))
+        this.siteByString.set(id, site);
+    return new Map(
+      [...strings].flatMap((id) => {
+        const site = this.siteByString.get(id);
+        return site === undefined ? [] : [[id, site] as const];
+      }),
+    );
   }
 
   private async sendOverviews(): Promise<void> {

@@ -108,7 +108,7 @@ export async function snapshotOf(
   earlier: string | undefined,
 ): Promise<{ kind: 'snapshot' | 'delta'; cursor: string; change: Change }> {
   return asIngest(async (tx) => {
-    const cursor = await horizon(tx);
+    const { below: cursor } = await horizon(tx);
     const change = await stateOf(tx, subject, new Date());
     const stringId = subject.kind === 'string' ? subject.stringId : undefined;
     const siteIds = subject.kind === 'fleet' ? [...subject.siteIds] : [subject.siteId];

@@ -8,12 +8,16 @@ import { SITE_VISIBLE } from './visible-site';
  * order lose nothing.
  */
 
-/** The number below which nothing can appear any more. */
-export async function horizon(tx: Tx): Promise<string> {
-  const { rows } = await tx.raw<{ rows: { horizon: string }[] }>(
-    'select pg_snapshot_xmin(pg_current_snapshot())::text as horizon',
+/**
+ * The number below which nothing can appear any more. `held`: transactions above it are still running, so what was
+ * committed after them is not to be read yet.
+ */
+export async function horizon(tx: Tx): Promise<{ below: string; held: boolean }> {
+  const { rows } = await tx.raw<{ rows: { below: string; held: boolean }[] }>(
+    `select pg_snapshot_xmin(s)::text as below, pg_snapshot_xmin(s) <> pg_snapshot_xmax(s) as held
+     from pg_current_snapshot() s`,
   );
-  return rows[0]!.horizon;
+  return rows[0]!;
 }
 
 export interface LiveEvent extends EventItem {
