@@ -4,6 +4,7 @@ import {
   commandedSpans,
   judgementTimes,
   lightSpans,
+  snowMayLie,
   timeLimitOf,
   type LightSpan,
   type StringContext,
@@ -48,6 +49,9 @@ export class SiteJudge {
   /** Frames are being read back; those that come meanwhile are read back too, for they must be judged in order. */
   catchingUp = false;
   missed = false;
+  /** Epoch s when the air was last looked at for snow. */
+  airLookedAtS = 0;
+  private snow = false;
   private light: LightSpan[] = [];
   private lightUntilS = 0;
 
@@ -104,6 +108,15 @@ export class SiteJudge {
     }
   }
 
+  /** Takes the air temperature (°C) in: where it makes or ends the chance of snow the strings are judged anew. */
+  takeAir(temperatureAir: number | null, nowS: number): void {
+    this.airLookedAtS = nowS;
+    const snow = snowMayLie(this.snow, temperatureAir);
+    if (snow === this.snow) return;
+    this.snow = snow;
+    this.setSite(this.site, nowS);
+  }
+
   frame(stringId: number, frame: JudgedFrame): Outcome | null {
     const judged = this.strings.get(stringId);
     if (!judged || frame.atS < judged.memory.atS) return null;
@@ -142,7 +155,7 @@ export class SiteJudge {
       heardAtS: string.heardAtS,
       commands: commandedSpans(behaviour, site.stage, site.zones.get(string.zoneId) ?? [], transmitters),
       light: this.light,
-      snowLikely: false,
+      snowLikely: this.snow,
     };
   }
 

@@ -16,10 +16,14 @@ export interface WriterHooks {
 /** How often memories that changed nothing are kept, so that a restart has little to judge again. */
 const CHECKPOINT_EVERY_S = 120;
 const STRINGS_A_WRITE = 1000;
+/** Checkpoints come in small portions, so that news never waits long behind them. */
+const CHECKPOINTS_A_WRITE = 100;
 
 /** Keeps what judgement concludes. While one transaction runs, the next one gathers: everybody's conclusions go together. */
 export class JudgeWriter {
-  private strings = new Map<number, { judged: JudgedNow; siteId: number }>();
+  /** What changed, and what is only kept so that a restart has less to do: it gives way. */
+  private readonly strings = new Map<number, { judged: JudgedNow; siteId: number }>();
+  private readonly checkpoints = new Map<number, { judged: JudgedNow; siteId: number }>();
   private unitEvents: UnitEventRow[] = [];
   private events: EventRow[] = [];
   private heard = new Map<number, number>();
@@ -40,7 +44,7 @@ export class JudgeWriter {
       if (outcome.outcome.changes.some((c) => c.stateBefore === 'unheard'))
         this.heard.set(outcome.judged.string.id, siteId);
     }
-    await this.flush();
+    await this.writeNews();
   }
 
   /** Marks the memories of a site to be kept with the next write. */
@@ -51,15 +55,24 @@ export class JudgeWriter {
     if (!now && nowS - (this.checkpointedS.get(siteId) ?? 0) < CHECKPOINT_EVERY_S) return;
     this.checkpointedS.set(siteId, nowS);
     for (const judged of site.strings.values())
-      if (judged.dirty) this.strings.set(judged.string.id, { judged, siteId });
+      if (judged.dirty) this.checkpoints.set(judged.string.id, { judged, siteId });
   }
 
+  /** Writes everything, checkpoints too. */
   async flush(): Promise<void> {
-    while (this.strings.size + this.events.length + this.unitEvents.length > 0)
-      await (this.running ??= this.writeGathered().finally(() => {
-        this.running = undefined;
-      }));
+    await this.writeNews();
+    while (this.checkpoints.size > 0) await this.writeOnce();
+  }
+
+  private async writeNews(): Promise<void> {
+    while (this.strings.size + this.events.length + this.unitEvents.length > 0) await this.writeOnce();
     await this.running;
+  }
+
+  private writeOnce(): Promise<void> {
+    return (this.running ??= this.writeGathered().finally(() => {
+      this.running = undefined;
+    }));
   }
 
   async stop(): Promise<void> {
@@ -70,7 +83,15 @@ export class JudgeWriter {
 
   private async writeGathered(): Promise<void> {
     const taken = [...this.strings].slice(0, STRINGS_A_WRITE);
-    for (const [id] of taken) this.strings.delete(id);
+    for (const [id] of taken) {
+      this.strings.delete(id);
+      this.checkpoints.delete(id);
+    }
+    if (this.strings.size === 0)
+      for (const checkpoint of [...this.checkpoints].slice(0, CHECKPOINTS_A_WRITE)) {
+        taken.push(checkpoint);
+        this.checkpoints.delete(checkpoint[0]);
+      }
     // events of a string go with its judgement, or after it: never before
     const rest = new Set(this.strings.keys());
     const ready = <T extends { stringId: number | null }>(rows: T[]): [T[], T[]] => [
@@ -111,7 +132,8 @@ export class JudgeWriter {
   /** What was gathered meanwhile rests on what was lost. */
   private lose(sites: ReadonlySet<number>): void {
     this.hooks.lost(sites);
-    for (const [id, { siteId }] of this.strings) if (sites.has(siteId)) this.strings.delete(id);
+    for (const waiting of [this.strings, this.checkpoints])
+      for (const [id, { siteId }] of waiting) if (sites.has(siteId)) waiting.delete(id);
     this.unitEvents = this.unitEvents.filter((e) => !sites.has(e.siteId));
     this.events = this.events.filter((e) => !sites.has(e.siteId));
   }

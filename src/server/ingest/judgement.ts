@@ -3,7 +3,14 @@ import type pg from 'pg';
 import { connect, database } from '../db/pools';
 import { isDatabaseAway } from '../errors';
 import { log } from '../log';
-import { framesAfter, inputsOf, judgementsOf, releaseSites, takeSites } from '../queries/judgement';
+import {
+  framesAfter,
+  inputsOf,
+  judgementsOf,
+  releaseSites,
+  takeSites,
+  temperatureAirOf,
+} from '../queries/judgement';
 import { judgedSite } from '../queries/judgement-contexts';
 import { seenPassing } from '../../domain/verdicts/conductors';
 import type { KnownLogger } from '../queries/ingest-loggers';
@@ -17,6 +24,7 @@ import { eventTime, type Progress } from './progress';
 import type { Written } from './write-batch';
 
 const SWEEP_EVERY_MS = 10_000;
+const AIR_EVERY_S = 300;
 const FRAMES_A_READ = 400;
 /** A string that was never judged is judged from so long ago on, seconds. */
 const FIRST_LOOK_BACK_S = 6 * 3600;
@@ -290,6 +298,8 @@ export class Judgement {
   }
 
   private async sweepSite(judge: SiteJudge, nowS: number): Promise<void> {
+    if (nowS - judge.airLookedAtS >= AIR_EVERY_S)
+      judge.takeAir(await temperatureAirOf(database('ingest'), judge.site.id), nowS);
     const progress = this.progressOf(nowS);
     const outcomes: { site: SiteJudge; outcome: Outcome }[] = [];
     for (const judged of [...judge.strings.values()]) {
