@@ -63,6 +63,16 @@ export async function inputsOf(
   return rows;
 }
 
+/** The coldest air (°C) that a site's sensors report now; null: none does. */
+export async function temperatureAirOf(db: Knex, siteId: number): Promise<number | null> {
+  const { rows } = await db.raw<{ rows: { temperatureAir: number | null }[] }>(
+    `select min(temperature_air) / 10.0::float8 as "temperatureAir" from weather_state
+     where site_id = ? and at > now() - interval '2 hours'`,
+    [siteId],
+  );
+  return rows[0]?.temperatureAir ?? null;
+}
+
 /** A judgement as it is at one moment: copied, for the memory goes on changing. */
 export interface JudgementRow {
   stringId: number;
