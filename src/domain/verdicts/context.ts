@@ -128,6 +128,19 @@ export interface StringContext {
   prepared?: Prepared;
 }
 
+/** Air this cold, °C, can leave snow or ice on the modules; this warm clears them. From experience. */
+export const SNOW_FROM = 2;
+export const SNOW_GONE_FROM = 5;
+
+/**
+ * Whether snow may be why a string does not wake. Between the two limits it stays as it was; without a sensor nothing
+ * speaks for snow. `temperatureAir` in °C.
+ */
+export function snowMayLie(before: boolean, temperatureAir: number | null): boolean {
+  if (temperatureAir === null || temperatureAir >= SNOW_GONE_FROM) return false;
+  return before || temperatureAir <= SNOW_FROM;
+}
+
 const pointAt = <T extends { sinceS: number }>(points: readonly T[], atS: number): T | undefined => {
   for (let i = points.length - 1; i >= 0; i--) if (points[i]!.sinceS <= atS) return points[i];
   return undefined;
