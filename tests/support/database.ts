@@ -53,6 +53,7 @@ export async function testDatabase(): Promise<TestDatabase> {
   };
   Object.assign(process.env, env);
   const owner = new pg.Pool({ connectionString: urls.url, max: 4 });
+  owner.on('error', () => undefined); // a test that ends the server's connections may end an idle one of these
   return {
     name,
     ...urls,
@@ -60,7 +61,15 @@ export async function testDatabase(): Promise<TestDatabase> {
     env,
     drop: async () => {
       await Promise.all([owner.end(), closePools()]);
-      await admin(`drop database if exists "${name}" with (force)`);
+      // autovacuum may be at work in it: that one leaves by itself and can't be ended by the owner
+      for (let tries = 0; ; tries++)
+        try {
+          await admin(`drop database if exists "${name}" with (force)`);
+          return;
+        } catch (error) {
+          if ((error as { code?: string }).code !== '42501' || tries >= 100) throw error;
+          await new Promise((resolve) => setTimeout(resolve, 200));
+        }
     },
   };
 }

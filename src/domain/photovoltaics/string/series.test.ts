@@ -188,6 +188,27 @@ describe('under current', () => {
     SLOW,
   );
 
+  it('finds the power of a unit that holds it level over many currents', () => {
+    for (const poaGlobal of [99, 100, 100.00000000000003, 101, 200]) {
+      const curve = stringCurveOf(
+        [
+          {
+            kind: 'optimizing',
+            module,
+            groups: evenly(3, poaGlobal, 45),
+            efficiency: 0.985,
+            currentOutMax: 15,
+            bypassVoltage: -0.5,
+          },
+        ],
+        0,
+        2,
+      );
+      expect(curve?.mpp?.p).toBeGreaterThan(0.25 * poaGlobal);
+      expect(curve?.localMaxima).toHaveLength(1);
+    }
+  });
+
   it('refuses by name', () => {
     expect(() => seriesString([passing()], -1)).toThrow(/resistance/);
     expect(() => seriesString([{ kind: 'in_shutdown', shutdownVoltage: 0.6, bypassVoltage: 1 }])).toThrow(

@@ -199,6 +199,17 @@ export function powerPeaks(
     const inside = Math.min(peak.at - left, right - peak.at) > 1e-7 * right;
     if (inside && peak.value > 0) peaks.push(peak);
   }
+  // a level stretch, such as an optimizing unit makes, may have its highest point on a corner
+  for (let i = 1; i < edges.length; i += 1) {
+    const at = edges[i]!;
+    const value = power(at);
+    const floor = value * (1 - 1e-9);
+    const beside = i + 1 < edges.length ? power(at * (1 + 1e-6)) : 0;
+    if (value <= 0 || power(at * (1 - 1e-6)) * (1 - 1e-9) > value || beside * (1 - 1e-9) > value) continue;
+    const last = edges[i + 1] ?? at;
+    const known = peaks.some((peak) => peak.at >= edges[i - 1]! && peak.at <= last && peak.value >= floor);
+    if (!known) peaks.push({ at, value });
+  }
   return peaks.sort((a, b) => b.value - a.value);
 }
 
