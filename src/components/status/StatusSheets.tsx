@@ -162,6 +162,12 @@ export function StatusSheets({ status, timeZone }: { status: InstallationStatus;
               <dt>Organisations kept apart by the database</dt>
               <dd>{database.rowSecurity ? 'yes' : 'no, one account'}</dd>
             </div>
+            {status.unknownTokens !== null && (
+              <div className={row}>
+                <dt>Connections refused for an unknown token, since the start</dt>
+                <dd>{number(status.unknownTokens)}</dd>
+              </div>
+            )}
             {processes.map((p) => (
               <div key={p.name} className={row}>
                 <dt>Process {p.name.slice(0, 8)}</dt>

@@ -20,6 +20,7 @@ const status = (some: Partial<InstallationStatus> = {}): InstallationStatus => (
   at: AT,
   database: { version: '15.1', bytes: 1e9, rowSecurity: true },
   processes: [],
+  unknownTokens: null,
   loggers: [logger('A'), logger('B')],
   work: {
     newestFrameAt: AT,

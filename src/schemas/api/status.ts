@@ -13,6 +13,8 @@ export const installationStatus = z.object({
   }),
   /** Processes that serve loggers now. */
   processes: z.array(z.object({ name: z.string(), loggers: z.int(), until: time })),
+  /** Connections tried with a token that nobody knows, at the process that answers and since it started; null: it takes no loggers. */
+  unknownTokens: z.int().nullable(),
   loggers: z.array(
     z.object({
       siteId: z.uuid(),
