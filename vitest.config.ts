@@ -71,6 +71,7 @@ export default defineConfig({
           globalSetup: [database, build],
           fileParallelism: false,
           sequence: { groupOrder: 2 },
+          retry: 1, // a browser on a busy machine may miss its moment once, not twice
           testTimeout: 240_000,
           hookTimeout: 240_000,
         },

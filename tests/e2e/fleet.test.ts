@@ -1,6 +1,6 @@
 import type { Browser, Page } from 'playwright-core';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
-import { startBrowser } from '../support/browser';
+import { hydrated, startBrowser } from '../support/browser';
 import { testDatabase, type TestDatabase } from '../support/database';
 import { PASSWORD, testFleet, type TestFleet } from '../support/fleet';
 import { signInAt, startSite, type RunningSite } from '../support/server';
@@ -110,6 +110,7 @@ describe('a site', () => {
     expect(await page.getByRole('heading', { level: 1 }).textContent()).toBe(
       'Two of 312 units did not shut down',
     );
+    await hydrated(page);
     await page.getByLabel('Kind').selectOption('hazard_acknowledged');
     await expect.poll(() => page.url(), SOON).toContain('kind=hazard_acknowledged');
     const events = page.getByRole('list', { name: 'Events, newest first' });

@@ -2,7 +2,7 @@ import type { Browser, Page } from 'playwright-core';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import type { Role } from '../../src/domain/access/permissions';
 import { axeFaults } from '../support/axe';
-import { startBrowser } from '../support/browser';
+import { hydrated, settled, startBrowser } from '../support/browser';
 import { testDatabase, type TestDatabase } from '../support/database';
 import { PASSWORD, testFleet, type TestFleet } from '../support/fleet';
 import { signInAt, startSite, type RunningSite } from '../support/server';
@@ -146,15 +146,13 @@ async function faultsOf(page: Page, shown: Shown): Promise<string[]> {
   page.on('pageerror', (e) => faults.push(`script: ${e.message}`));
   const response = await page.goto(site.url + shown.path(), { waitUntil: 'load' });
   if (response?.status() !== (shown.status ?? 200)) faults.push(`status ${response?.status()}`);
-  // islands take over without a word in the console
-  await page.waitForFunction(
-    () => document.querySelectorAll('astro-island[ssr][client="load"]').length === 0,
-  );
+  await hydrated(page); // without a word in the console
   const headings = await page.locator('h1').count();
   if (headings !== 1) faults.push(`${headings} headings of the first level`);
   for (const look of LOOKS) {
     await page.setViewportSize({ width: look.width, height: 900 });
     await page.emulateMedia({ colorScheme: look.scheme });
+    await settled(page);
     const wider = await page.evaluate(
       () => document.documentElement.scrollWidth - document.documentElement.clientWidth,
     );

@@ -1,7 +1,7 @@
 import type { Browser, BrowserContext, Page } from 'playwright-core';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { axeFaults } from '../support/axe';
-import { startBrowser } from '../support/browser';
+import { hydrated, startBrowser } from '../support/browser';
 import { testDatabase, type TestDatabase } from '../support/database';
 import { PASSWORD, testFleet } from '../support/fleet';
 import { signInAt, startSite, type RunningSite } from '../support/server';
@@ -35,8 +35,6 @@ async function phone(role: string, more: Parameters<Browser['newContext']>[0] = 
   await context.addCookies([{ name, value, url: site.url }]);
   return context;
 }
-const ready = (page: Page) =>
-  page.waitForFunction(() => document.querySelectorAll('astro-island[ssr][client="load"]').length === 0);
 const answer = (page: Page): Promise<string> =>
   page
     .locator('#answer')
@@ -51,7 +49,7 @@ describe('a reading on a phone', () => {
     page.on('pageerror', (error) => faults.push(error.message));
     page.on('console', (line) => line.type() === 'error' && faults.push(line.text()));
     await page.goto(`${site.url}/try-a-reading`);
-    await ready(page);
+    await hydrated(page);
     expect(await page.locator('main summary').first().innerText()).toMatch(/^14\sunits, shutdown-only/);
     for (const key of ['7', 'Decimal point', '8'])
       await page

@@ -176,7 +176,8 @@ export function TimeChart({ model, height = 300, csvHref, fileName, onZoom, cont
           )}
         </div>
       </div>
-      <div style={{ minHeight: height }}>
+      {/* a canvas keeps its old width until it hears of the new one: it must not push the page meanwhile */}
+      <div className="[overflow-x:clip]" style={{ minHeight: height }}>
         {asTable ? (
           <ChartTable model={model} height={height} />
         ) : near && width > 0 ? (
