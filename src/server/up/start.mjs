@@ -159,7 +159,7 @@ const SIGN_INS = [
   ['manager@lowfield.example', 'manager'],
   ['technician@lowfield.example', 'technician'],
   ['analyst@lowfield.example', 'analyst'],
-  ['customer@lowfield.example', 'customer, sees one site'],
+  ['customer@lowfield.example', 'customer, sees two sites'],
   ['manager@harbourline.example', 'manager of another organisation'],
 ];
 
