@@ -2,7 +2,7 @@ import { mkdtemp, rm } from 'node:fs/promises';
 import { tmpdir } from 'node:os';
 import path from 'node:path';
 import pg from 'pg';
-import { copySeconds, writeNarrowFile } from './ingest/copy';
+import { checkpoint, copySeconds, writeNarrowFile } from './ingest/copy';
 import { measureLive } from './ingest/live';
 import { connectLogger } from './ingest/loggers';
 import { plantFleet } from './ingest/plant';
@@ -50,7 +50,7 @@ try {
     // the first frames of every string begin its judgement: that happens once in its life
     const first = WARM_UP_MINUTES;
     await Promise.all(loggers.map((l, i) => l.sendAll(messages[i]!.slice(0, first), WINDOW)));
-    await db.query('checkpoint');
+    await checkpoint(db);
     say('sending');
     const start = performance.now();
     await Promise.all(loggers.map((l, i) => l.sendAll(messages[i]!.slice(first), WINDOW)));

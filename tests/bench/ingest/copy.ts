@@ -19,6 +19,15 @@ export async function writeNarrowFile(
   await once(out, 'finish');
 }
 
+/** Starts a measurement with nothing left to write back, where the account may ask for that. */
+export async function checkpoint(db: pg.ClientBase): Promise<void> {
+  try {
+    await db.query('checkpoint');
+  } catch (error) {
+    if ((error as { code?: string }).code !== '42501') throw error;
+  }
+}
+
 /** Seconds that psql \copy needs for the file into a fresh table without an index. */
 export async function copySeconds(db: pg.Client, file: string): Promise<number> {
   await db.query('drop table if exists narrow');
@@ -26,7 +35,7 @@ export async function copySeconds(db: pg.Client, file: string): Promise<number> 
     `create table narrow (at timestamptz not null, unit_id int4 not null, voltage real, current real, temperature real,
        signal int2, via int2, state int2)`,
   );
-  await db.query('checkpoint');
+  await checkpoint(db);
   const start = performance.now();
   await promisify(execFile)(process.env.WAKELINE_PSQL ?? 'psql', [
     process.env.DATABASE_URL ?? '',
