@@ -3,8 +3,7 @@ import { useMemo } from 'react';
 import { CauseSheet } from '../../components/causes/CauseSheet';
 import { byGravity } from '../../components/causes/words';
 import { Button } from '../../components/ui/Button';
-import { Heading } from '../../components/ui/Heading';
-import { LiveMark } from '../../components/ui/Live';
+import { LiveHeading } from '../../components/ui/LiveHeading';
 import { Notice } from '../../components/ui/Notice';
 import { Sheet } from '../../components/ui/Sheet';
 import { useNow } from '../../components/ui/Time';
@@ -54,19 +53,7 @@ export function FleetBoard({ initial, view: initialView, missed, timeZone }: Pro
 
   return (
     <>
-      <Heading
-        finding={finding.heading}
-        sentence={finding.sentence}
-        actions={
-          <LiveMark
-            lostSince={!status.live && status.since ? status.since.toISOString() : null}
-            timeZone={readerZone}
-          />
-        }
-      />
-      <p className="sr-only" role="status">
-        {finding.heading}
-      </p>
+      <LiveHeading finding={finding} status={status} timeZone={readerZone} />
       {error && (
         <div className="mb-6">
           <Notice

@@ -3,8 +3,7 @@ import { useMemo } from 'react';
 import { CauseSheet } from '../../components/causes/CauseSheet';
 import { Button, ButtonLink } from '../../components/ui/Button';
 import { Caution } from '../../components/ui/Caution';
-import { Heading } from '../../components/ui/Heading';
-import { LiveMark } from '../../components/ui/Live';
+import { LiveHeading } from '../../components/ui/LiveHeading';
 import { Notice } from '../../components/ui/Notice';
 import { Segmented } from '../../components/ui/Segmented';
 import { Sheet } from '../../components/ui/Sheet';
@@ -100,19 +99,7 @@ export function ShutdownBoard({ initial, view: initialView, timeZone }: Props) {
 
   return (
     <>
-      <Heading
-        finding={finding.heading}
-        sentence={finding.sentence}
-        actions={
-          <LiveMark
-            lostSince={!status.live && status.since ? status.since.toISOString() : null}
-            timeZone={readerZone}
-          />
-        }
-      />
-      <p className="sr-only" role="status">
-        {finding.heading}
-      </p>
+      <LiveHeading finding={finding} status={status} timeZone={readerZone} />
       <div className="mb-6">
         <Caution strong="Shutdown is not isolation.">
           Each module and its leads to its unit stay at module voltage in light. Wakeline reads what units

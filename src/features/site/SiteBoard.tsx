@@ -5,8 +5,7 @@ import { byGravity } from '../../components/causes/words';
 import { TraceSheet } from '../../components/trace/TraceSheet';
 import { Button } from '../../components/ui/Button';
 import { Caution } from '../../components/ui/Caution';
-import { Heading } from '../../components/ui/Heading';
-import { LiveMark } from '../../components/ui/Live';
+import { LiveHeading } from '../../components/ui/LiveHeading';
 import { Notice } from '../../components/ui/Notice';
 import { useNow } from '../../components/ui/Time';
 import { clocksDiffer, useReaderZone } from '../../components/ui/reader-zone';
@@ -67,23 +66,15 @@ export function SiteBoard({ initial, events, kind: initialKind }: Props) {
 
   return (
     <>
-      <Heading
+      <LiveHeading
         crumbs={[
           { label: 'Fleet', href: paths.fleet() },
           { label: page.site.place ? `${page.site.name}, ${page.site.place}` : page.site.name },
         ]}
-        finding={finding.heading}
-        sentence={finding.sentence}
-        actions={
-          <LiveMark
-            lostSince={!status.live && status.since ? status.since.toISOString() : null}
-            timeZone={timeZone}
-          />
-        }
+        finding={finding}
+        status={status}
+        timeZone={timeZone}
       />
-      <p className="sr-only" role="status">
-        {finding.heading}
-      </p>
       {error && (
         <div className="mb-6">
           <Notice
