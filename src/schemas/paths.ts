@@ -1,3 +1,7 @@
+/** Families of the equipment catalogue, as addresses name them. */
+export const EQUIPMENT_FAMILIES = ['modules', 'units', 'connectors', 'inverters'] as const;
+export type EquipmentFamily = (typeof EQUIPMENT_FAMILIES)[number];
+
 /** Every URL of the product is built here, for pages and the API alike. */
 export const paths = {
   signIn: (next?: string) => (next ? `/sign-in?next=${encodeURIComponent(next)}` : '/sign-in'),
@@ -5,7 +9,31 @@ export const paths = {
   site: (site: string) => `/sites/${site}`,
   string: (site: string, string: string) => `/sites/${site}/strings/${string}`,
   commissioning: () => '/commissioning',
+  newSite: () => '/commissioning/new',
+  /** The steps of one site, from as-built to handover. */
+  commissioningSite: (site: string) => `/commissioning/${site}`,
+  asBuilt: (site: string) => `/commissioning/${site}/as-built`,
+  asBuiltHistory: (site: string) => `/commissioning/${site}/history`,
+  asBuiltImport: (site: string) => `/commissioning/${site}/import`,
+  /** Serials read on site, position by position. */
+  serials: (site: string, string?: string) =>
+    `/commissioning/${site}/serials${string ? `?string=${string}` : ''}`,
+  roofPlan: (site: string) => `/commissioning/${site}/roof`,
+  designChecks: (site: string) => `/commissioning/${site}/design`,
+  checks: (site: string) => `/commissioning/${site}/checks`,
+  readings: (site: string) => `/commissioning/${site}/readings`,
+  /** The phone's page: works without a network. */
+  capture: (site: string) => `/capture/${site}`,
   rollCall: (site: string) => `/commissioning/${site}/roll-call`,
+  walk: (site: string) => `/commissioning/${site}/walk`,
+  membership: (site: string) => `/commissioning/${site}/membership`,
+  shutdownTests: (site: string) => `/commissioning/${site}/shutdown-test`,
+  shutdownTest: (site: string, test: string) => `/commissioning/${site}/shutdown-test/${test}`,
+  handover: (site: string) => `/commissioning/${site}/handover`,
+  equipment: () => '/equipment',
+  equipmentList: (family: EquipmentFamily) => `/equipment/${family}`,
+  equipmentType: (family: EquipmentFamily, type: string) => `/equipment/${family}/${type}`,
+  mail: () => '/mail',
   shutdown: () => '/shutdown',
   customer: (site: string) => `/my-site/${site}`,
   customerHome: () => '/my-site',
@@ -31,6 +59,29 @@ export const paths = {
     rollCall: (site: string) => `/api/sites/${site}/roll-call`,
     rollCallCsv: (site: string) => `/api/sites/${site}/roll-call/units.csv`,
     rollCallStop: (site: string) => `/api/sites/${site}/roll-call/stop`,
+    equipment: (family: EquipmentFamily) => `/api/equipment/${family}`,
+    equipmentCsv: (family: EquipmentFamily) => `/api/equipment/${family}.csv`,
+    equipmentType: (family: EquipmentFamily, type: string) => `/api/equipment/${family}/${type}`,
+    connectorPairs: () => '/api/equipment/connector-pairs',
+    sites: () => '/api/sites',
+    asBuilt: (site: string) => `/api/sites/${site}/as-built`,
+    asBuiltCsv: (site: string) => `/api/sites/${site}/as-built.csv`,
+    asBuiltImport: (site: string) => `/api/sites/${site}/as-built/import`,
+    placements: (site: string) => `/api/sites/${site}/placements`,
+    checks: (site: string) => `/api/sites/${site}/checks`,
+    signOff: (string: string) => `/api/strings/${string}/sign-off`,
+    readings: (site: string) => `/api/sites/${site}/readings`,
+    attachments: (site: string) => `/api/sites/${site}/attachments`,
+    attachment: (attachment: string) => `/api/attachments/${attachment}`,
+    attachmentThumbnail: (attachment: string) => `/api/attachments/${attachment}?variant=thumbnail`,
+    /** What the phone keeps of a site, to work without a network. */
+    captureSnapshot: (site: string) => `/api/sites/${site}/capture`,
+    shutdownTests: (site: string) => `/api/sites/${site}/shutdown-tests`,
+    shutdownTest: (test: string) => `/api/shutdown-tests/${test}`,
+    handover: (site: string) => `/api/sites/${site}/handover`,
+    acceptGap: (site: string) => `/api/sites/${site}/accepted-gaps`,
+    /** A paper of a site: handover pack, test report. */
+    paper: (paper: string) => `/api/papers/${paper}`,
     shutdown: () => '/api/shutdown',
     shutdownCsv: () => '/api/shutdown.csv',
     customer: (site: string) => `/api/my-site/${site}`,

@@ -4,6 +4,7 @@ export const ROLES = ['manager', 'technician', 'analyst', 'customer'] as const;
 export type Role = (typeof ROLES)[number];
 
 const STAFF = ['manager', 'technician', 'analyst'] as const;
+const ON_SITE = ['manager', 'technician'] as const;
 
 export const PERMISSIONS = {
   'own_account.use': ROLES,
@@ -14,7 +15,22 @@ export const PERMISSIONS = {
   'shutdown.read': STAFF,
   'hazard.acknowledge': STAFF,
   'roll_call.read': STAFF,
-  'roll_call.run': ['manager', 'technician'],
+  'roll_call.run': ON_SITE,
+  'equipment.read': STAFF,
+  'equipment.write': ON_SITE,
+  'connector_evidence.record': ['manager'],
+  'as_built.read': STAFF,
+  'as_built.write': ON_SITE,
+  'checks.read': STAFF,
+  'checks.write': ON_SITE,
+  'attachment.read': STAFF,
+  'shutdown_test.read': STAFF,
+  'shutdown_test.run': ON_SITE,
+  'handover.read': STAFF,
+  'handover.make': ON_SITE,
+  'gap.accept': ['manager'],
+  'papers.read': ROLES,
+  'mail.read': ['manager'],
   'customer_page.read': ROLES,
   'status.read': ['manager'],
   'reading.try': STAFF,
