@@ -2,6 +2,7 @@ import { Logger, parseCronItems, run, runMigrations, type Runner, type TaskList 
 import { config } from '../config';
 import { log } from '../log';
 import { keepDays, mergeLateFrames } from './keep-days';
+import { sendDue } from '../mail/send-outbox';
 import { rollUpClosed, rollUpDirty } from './roll-up';
 
 /** Background jobs. The library keeps its queue as the database's owner; the jobs themselves work as ingest. */
@@ -13,6 +14,10 @@ export const TASKS: TaskList = {
     const redone = await rollUpDirty();
     if (quarters + late + redone > 0) log.debug({ quarters, late, redone }, 'rolled up');
   },
+  send_letters: async () => {
+    const { sent } = await sendDue(() => new Date());
+    if (sent > 0) log.info({ sent }, 'letters were sent');
+  },
   keep_days: async () => {
     const dropped = await keepDays(new Date());
     if (dropped > 0) log.info({ dropped }, 'raw readings past their retention were given up');
@@ -21,6 +26,7 @@ export const TASKS: TaskList = {
 
 const CRON = [
   { task: 'roll_up', match: '* * * * *', options: { queueName: 'roll_up', jobKey: 'roll_up' } },
+  { task: 'send_letters', match: '* * * * *', options: { queueName: 'letters', jobKey: 'send_letters' } },
   { task: 'keep_days', match: '7 * * * *', options: { queueName: 'keep_days', jobKey: 'keep_days' } },
 ];
 

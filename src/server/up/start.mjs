@@ -62,9 +62,13 @@ const endOf = (child, name) =>
     child.once('error', (error) => resolve({ name, code: error.message, signal: null }));
   });
 
-function settings(stage, addresses, { host, port, simulatorPort }) {
+function settings(stage, addresses, { host, port, simulatorPort, address, post }) {
   return {
     ...process.env,
+    PUBLIC_URL: process.env.PUBLIC_URL || address,
+    // a demo without a mail server of its own has the local post
+    SMTP_URL: process.env.SMTP_URL || (post ? `smtp://127.0.0.1:${post.port}` : ''),
+    LOCAL_MAIL_FOLDER: post && !process.env.SMTP_URL ? post.folder : '',
     DATABASE_URL: stage.url,
     DATABASE_URL_APP: addresses.oneRole ? '' : addresses.appUrl,
     DATABASE_URL_INGEST: addresses.oneRole ? '' : addresses.ingestUrl,
@@ -155,6 +159,20 @@ function watchDatabase(stage, atEnd) {
   });
 }
 
+/** The demo's mail server: takes every letter, sends none on. */
+async function launchLocalPost(home, atEnd) {
+  const post = { folder: path.join(home, 'letters'), port: await freePort(0) };
+  const child = launch(
+    process.execPath,
+    ['--import', 'tsx', 'src/server/mail/main.ts', post.folder, String(post.port)],
+    { cwd: root },
+  );
+  child.stdout?.resume(); // its one line is no news
+  child.stderr?.pipe(process.stderr);
+  atEnd(() => end(child));
+  return post;
+}
+
 const SIGN_INS = [
   ['manager@lowfield.example', 'manager'],
   ['technician@lowfield.example', 'technician'],
@@ -201,7 +219,8 @@ async function bringUpDemo(args, atEnd, { prepare = () => Promise.resolve(), lau
   const prepared = prepare(); // goes on while the demo is written: two cores are better than one
   prepared.catch(() => undefined);
   const addresses = await prepareDemo(stage, { fresh: args.includes('--fresh') });
-  const env = settings(stage, addresses, { host, port, simulatorPort });
+  const post = stage.hasDemo && !process.env.SMTP_URL ? await launchLocalPost(stage.home, atEnd) : undefined;
+  const env = settings(stage, addresses, { host, port, simulatorPort, address, post });
   await prepared;
   const site = launchSite(env);
   atEnd(() => end(site, 20_000));

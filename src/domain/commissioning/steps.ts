@@ -1,0 +1,240 @@
+/**
+ * The steps from as-built to handover, what stands of each and what blocks it. A gap that a manager has accepted by
+ * name no longer blocks, and stays visible. Pure counting over what is recorded; it judges no string.
+ */
+export const STEPS = [
+  'as_built',
+  'install_checks',
+  'meter_readings',
+  'roll_call',
+  'shutdown_test',
+  'handover',
+] as const;
+export type StepKey = (typeof STEPS)[number];
+
+export interface StringFacts {
+  name: string;
+  /** Units that answer no roll call. */
+  shutdownOnly: boolean;
+  slots: number;
+  placed: number;
+  /** Units that can answer, and that have. */
+  roster: number;
+  heard: number;
+  signedOff: boolean;
+  /** Signed, and recorded anew since. */
+  signOffStale: boolean;
+  checksRecorded: number;
+  /** Names of newest checks that are failed. */
+  failedChecks: readonly string[];
+  /** Newest reading + to −, outcome as judged when it was taken; null: none. */
+  reading: 'as_expected' | 'finding' | 'cant_tell' | 'proves_nothing' | null;
+}
+
+export interface ZoneFacts {
+  name: string;
+  /** Newest signed test that nothing supersedes. */
+  test: 'passed' | 'failed' | 'consistent' | 'not_witnessed' | null;
+}
+
+export interface CommissioningFacts {
+  stage: 'commissioning' | 'operating';
+  strings: readonly StringFacts[];
+  zones: readonly ZoneFacts[];
+  /** Heard at the site and on no slot. */
+  heardUnknown: number;
+  rollCallRunning: boolean;
+  rollCallStarted: boolean;
+  /** `none`: no rapid shutdown is asked of this site by its rule set. */
+  ruleSet: string;
+  /** Gaps that a manager has accepted: their keys. */
+  accepted: readonly string[];
+  packs: number;
+}
+
+/** One point that keeps a step from being done. */
+export interface Gap {
+  /** Stays the same while the point does: what is accepted is accepted by it. */
+  key: string;
+  words: string;
+  accepted: boolean;
+}
+
+export interface Step {
+  key: StepKey;
+  state: 'done' | 'under_way' | 'not_started';
+  /** What stands, in few words. */
+  words: string;
+  gaps: Gap[];
+}
+
+const counted = (n: number, one: string, many = `${one}s`): string => `${n} ${n === 1 ? one : many}`;
+/** "B1, B2 and 3 more". */
+function named(names: readonly string[], most = 4): string {
+  if (names.length <= most + 1)
+    return names.length < 2 ? names.join('') : `${names.slice(0, -1).join(', ')} and ${names.at(-1) ?? ''}`;
+  return `${names.slice(0, most).join(', ')} and ${names.length - most} more`;
+}
+const total = (strings: readonly StringFacts[], of: (s: StringFacts) => number): number =>
+  strings.reduce((sum, s) => sum + of(s), 0);
+
+interface Draft {
+  state: Step['state'];
+  words: string;
+  gaps: { key: string; words: string }[];
+}
+
+function asBuilt({ strings, zones }: CommissioningFacts): Draft {
+  const slots = total(strings, (s) => s.slots);
+  const placed = total(strings, (s) => s.placed);
+  const gaps: Draft['gaps'] = [];
+  if (strings.length === 0) gaps.push({ key: 'no_strings', words: 'No string is entered.' });
+  for (const s of strings)
+    if (s.placed < s.slots)
+      gaps.push({
+        key: `serials:${s.name}`,
+        words: `${s.name}: ${counted(s.slots - s.placed, 'slot')} without a serial.`,
+      });
+  if (zones.length === 0) gaps.push({ key: 'no_zone', words: 'No zone and no initiator are entered.' });
+  return {
+    state: strings.length === 0 ? 'not_started' : gaps.length === 0 ? 'done' : 'under_way',
+    words:
+      strings.length === 0
+        ? 'nothing entered'
+        : placed === slots
+          ? `${counted(slots, 'unit')}, ${counted(strings.length, 'string')}`
+          : `${placed} of ${counted(slots, 'unit')}, ${counted(strings.length, 'string')}`,
+    gaps,
+  };
+}
+
+function installChecks({ strings }: CommissioningFacts): Draft {
+  const signed = strings.filter((s) => s.signedOff && !s.signOffStale);
+  const begun = strings.some((s) => s.checksRecorded > 0);
+  const gaps: Draft['gaps'] = [];
+  for (const s of strings) {
+    if (s.failedChecks.length > 0)
+      gaps.push({ key: `failed:${s.name}`, words: `${s.name}: ${named(s.failedChecks)} failed.` });
+    else if (s.signedOff && s.signOffStale)
+      gaps.push({
+        key: `stale:${s.name}`,
+        words: `${s.name} was recorded anew after it was signed: sign again.`,
+      });
+    else if (!s.signedOff) gaps.push({ key: `unsigned:${s.name}`, words: `${s.name} is not signed off.` });
+  }
+  return {
+    state: !begun ? 'not_started' : gaps.length === 0 && strings.length > 0 ? 'done' : 'under_way',
+    words: begun ? `${signed.length} of ${counted(strings.length, 'string')} signed` : 'not started',
+    gaps,
+  };
+}
+
+function meterReadings({ strings }: CommissioningFacts): Draft {
+  const expected = strings.filter((s) => s.reading === 'as_expected');
+  const begun = strings.some((s) => s.reading !== null);
+  const words = {
+    finding: 'read, and not as expected',
+    cant_tell: 'read, and two explanations fit',
+    proves_nothing: 'read without light that powers the units: proves nothing',
+  } as const;
+  const gaps = strings
+    .filter((s) => s.reading !== 'as_expected')
+    .map((s) =>
+      s.reading === null
+        ? { key: `unread:${s.name}`, words: `${s.name} has no reading.` }
+        : { key: `reading:${s.name}`, words: `${s.name}: ${words[s.reading as keyof typeof words]}.` },
+    );
+  return {
+    state: !begun ? 'not_started' : gaps.length === 0 ? 'done' : 'under_way',
+    words: begun ? `${expected.length} of ${strings.length} as expected` : 'not started',
+    gaps,
+  };
+}
+
+function rollCall(facts: CommissioningFacts): Draft | null {
+  const answering = facts.strings.filter((s) => !s.shutdownOnly);
+  if (answering.length === 0) return null; // nothing here can answer
+  const roster = total(answering, (s) => s.roster);
+  const heard = total(answering, (s) => s.heard);
+  const gaps: Draft['gaps'] = answering
+    .filter((s) => s.heard < s.roster)
+    .map((s) => ({
+      key: `unheard:${s.name}`,
+      words: `${s.name}: ${counted(s.roster - s.heard, 'unit')} not heard. Treat the string as live.`,
+    }));
+  if (facts.heardUnknown > 0)
+    gaps.push({
+      key: 'heard_unknown',
+      words: `${counted(facts.heardUnknown, 'serial is', 'serials are')} heard and on no slot.`,
+    });
+  const begun = facts.rollCallStarted || heard > 0;
+  return {
+    state: !begun ? 'not_started' : gaps.length === 0 && roster > 0 ? 'done' : 'under_way',
+    words: begun ? `${heard} of ${roster} heard` : 'not started',
+    gaps,
+  };
+}
+
+const TEST_WORDS = {
+  failed: 'did not pass its shutdown test',
+  consistent: 'was not measured: what its units report agrees, and no instrument has witnessed it',
+  not_witnessed: 'was not witnessed in its shutdown test',
+} as const;
+
+function shutdownTest({ zones, ruleSet }: CommissioningFacts): Draft {
+  if (ruleSet === 'none' && zones.every((z) => z.test === null))
+    return { state: 'done', words: 'none asked by the rule set', gaps: [] };
+  const passed = zones.filter((z) => z.test === 'passed');
+  const gaps = zones
+    .filter((z) => z.test !== 'passed')
+    .map((z) =>
+      z.test === null || z.test === 'passed'
+        ? { key: `untested:${z.name}`, words: `${z.name} has no signed shutdown test.` }
+        : { key: `test:${z.name}`, words: `${z.name} ${TEST_WORDS[z.test]}.` },
+    );
+  const begun = zones.some((z) => z.test !== null);
+  return {
+    state: !begun ? 'not_started' : gaps.length === 0 ? 'done' : 'under_way',
+    words: begun ? `${passed.length} of ${counted(zones.length, 'zone')} passed` : 'not started',
+    gaps,
+  };
+}
+
+function handover({ packs, stage }: CommissioningFacts): Draft {
+  return {
+    state: stage === 'operating' && packs > 0 ? 'done' : packs > 0 ? 'under_way' : 'not_started',
+    words: packs === 0 ? 'not made' : `version ${packs}`,
+    gaps: [],
+  };
+}
+
+/** All steps in their order; the roll call is left out where no unit can answer one. */
+export function commissioningSteps(facts: CommissioningFacts): Step[] {
+  const accepted = new Set(facts.accepted);
+  const drafts: readonly (readonly [StepKey, Draft | null])[] = [
+    ['as_built', asBuilt(facts)],
+    ['install_checks', installChecks(facts)],
+    ['meter_readings', meterReadings(facts)],
+    ['roll_call', rollCall(facts)],
+    ['shutdown_test', shutdownTest(facts)],
+    ['handover', handover(facts)],
+  ];
+  return drafts.flatMap(([key, draft]) => {
+    if (!draft) return [];
+    const gaps = draft.gaps.map((gap) => ({
+      key: `${key}/${gap.key}`,
+      words: gap.words,
+      accepted: accepted.has(`${key}/${gap.key}`),
+    }));
+    const settled = gaps.length > 0 && gaps.every((gap) => gap.accepted);
+    return [{ key, state: settled ? 'done' : draft.state, words: draft.words, gaps }];
+  });
+}
+
+/** What still blocks the handover: gaps of the steps before it that nobody has accepted. */
+export const openGaps = (steps: readonly Step[]): Gap[] =>
+  steps.filter((s) => s.key !== 'handover').flatMap((s) => s.gaps.filter((gap) => !gap.accepted));
+
+/** The step that is worked on: the first that is not done. */
+export const currentStep = (steps: readonly Step[]): Step | undefined =>
+  steps.find((s) => s.state !== 'done');
