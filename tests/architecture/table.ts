@@ -22,6 +22,7 @@ export const FEATURES = [
   'customer',
   'readings',
   'methods',
+  'capture',
 ] as const;
 const AREAS = FEATURES.map((name) => `src/features/${name}`);
 
@@ -76,7 +77,18 @@ export const TABLE: readonly Row[] = [
     folder: 'src/components',
     may: ['src/drawings', 'src/lib', 'src/schemas', 'src/domain'],
     packages: 'browser',
-    subfolders: ['ui', 'charts', 'shell', 'states', 'causes', 'events', 'status', 'trace'],
+    subfolders: [
+      'ui',
+      'charts',
+      'shell',
+      'states',
+      'causes',
+      'events',
+      'status',
+      'trace',
+      'readings',
+      'capture',
+    ],
   },
   { folder: 'src/features', may: [], packages: [], subfolders: FEATURES },
   ...FEATURES.map((name): Row => ({ folder: `src/features/${name}`, may: FEATURE, packages: 'browser' })),

@@ -1,8 +1,13 @@
 import { useState } from 'react';
 import { Button } from '../../components/ui/Button';
 import { Field } from '../../components/ui/Field';
-import type { PanelProps } from './StringPanel';
-import { OTHERS_MAX, othersOf, othersText, type OtherString } from './form';
+import {
+  OTHERS_MAX,
+  othersOf,
+  othersText,
+  type OtherString,
+  type PanelProps,
+} from '../../components/readings/form';
 
 /** What makes an answer firmer: other strings under the same light, light and temperature measured. */
 export function KnownMore({ form, faults, typed }: PanelProps) {

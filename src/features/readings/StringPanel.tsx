@@ -2,16 +2,10 @@ import { useState, type ReactNode } from 'react';
 import { UNIT_KINDS } from '../../domain/equipment/unit-type';
 import { Field } from '../../components/ui/Field';
 import { Segmented } from '../../components/ui/Segmented';
-import { RANGES, chosen, type Faults, type ReadingForm } from './form';
-import { SHEETS, SHEET_KEYS } from './sheets';
-import { KIND_LABELS, stringWords } from './words';
+import { RANGES, chosen, type PanelProps } from '../../components/readings/form';
+import { SHEETS, SHEET_KEYS } from '../../components/readings/sheets';
+import { KIND_LABELS, stringWords } from '../../components/readings/words';
 
-export interface PanelProps {
-  form: ReadingForm;
-  faults: Faults;
-  typed: (some: Partial<ReadingForm>) => void;
-  choose: (some: Partial<ReadingForm>) => void;
-}
 const OWN_FIELDS = [
   { key: 'voc', label: 'Open-circuit voltage at STC', unit: 'V' },
   { key: 'beta', label: 'Its change with temperature', unit: '%/K' },

@@ -3,14 +3,14 @@ import { interpretReading } from '../../domain/readings/interpret';
 import { READING_CAUTION } from '../../domain/readings/words';
 import { Caution } from '../../components/ui/Caution';
 import { useViewInUrl } from '../../lib/view-in-url';
-import { AnswerSheet } from './AnswerSheet';
+import { AnswerSheet } from '../../components/readings/AnswerSheet';
 import { KnownMore } from './KnownMore';
-import { MeterPanel } from './MeterPanel';
-import { ReadAloud } from './ReadAloud';
-import { ReadingScale } from './ReadingScale';
+import { MeterPanel } from '../../components/readings/MeterPanel';
+import { ReadAloud } from '../../components/readings/ReadAloud';
+import { ReadingScale } from '../../components/readings/ReadingScale';
 import { StringPanel } from './StringPanel';
-import { DEFAULTS, PLACES, chosen, readForm, type ReadingForm } from './form';
-import { HOW_TO_MEASURE, aloud, cautionParts, titleOf } from './words';
+import { DEFAULTS, PLACES, chosen, readForm, type ReadingForm } from '../../components/readings/form';
+import { HOW_TO_MEASURE, aloud, cautionParts, titleOf } from '../../components/readings/words';
 
 /** A meter reading and what it means, worked out as it is typed; everything that was typed stands in the address. */
 export function TryReading({ initial }: { initial: ReadingForm }) {

@@ -3,11 +3,12 @@ const KEY = 'min-h-[48px] rounded border border-rule bg-sheet text-[20px] font-m
 
 interface Props {
   onKey: (key: string) => void;
+  doneWords?: string;
   onDone: () => void;
 }
 
 /** Numbers under one thumb; hidden where there is a keyboard. */
-export function NumberPad({ onKey, onDone }: Props) {
+export function NumberPad({ onKey, doneWords = 'Done', onDone }: Props) {
   return (
     <div role="group" aria-label="Number pad" data-pad className="grid grid-cols-4 gap-1.5 pt-1 lg:hidden">
       <noscript>
@@ -64,7 +65,7 @@ export function NumberPad({ onKey, onDone }: Props) {
         style={{ gridColumn: 4, gridRow: 4 }}
         onClick={onDone}
       >
-        Done
+        {doneWords}
       </button>
     </div>
   );

@@ -1,13 +1,28 @@
 import { useState } from 'react';
-import { Field } from '../../components/ui/Field';
-import { Segmented } from '../../components/ui/Segmented';
+import { Field } from '../ui/Field';
+import { Segmented } from '../ui/Segmented';
 import { NumberPad } from './NumberPad';
-import type { PanelProps } from './StringPanel';
-import { COMMANDED, FIELD_AT, LIGHTS, METERS, PLACES, chosen, pressed, type Place } from './form';
+import {
+  COMMANDED,
+  FIELD_AT,
+  LIGHTS,
+  METERS,
+  PLACES,
+  chosen,
+  pressed,
+  type PanelProps,
+  type Place,
+} from './form';
 import { LIGHT_LABELS, METER_LABELS, PLACE_LABELS, commandedLabels } from './words';
 
+interface Props extends PanelProps {
+  place: Place;
+  /** Where the pad's last key leads: the next kind of reading of this string; without it the pad folds. */
+  then?: Place | null;
+}
+
 /** Circumstances and the number itself, big enough for sun and gloves. */
-export function MeterPanel({ form, faults, place, typed, choose }: PanelProps & { place: Place }) {
+export function MeterPanel({ form, faults, place, then = null, typed, choose }: Props) {
   const field = FIELD_AT[place];
   const text = form[field] ?? '';
   const fault = faults[field];
@@ -122,7 +137,13 @@ export function MeterPanel({ form, faults, place, typed, choose }: PanelProps & 
           ))}
         </dl>
       )}
-      {pad && <NumberPad onKey={key} onDone={() => setPad(false)} />}
+      {pad && (
+        <NumberPad
+          onKey={key}
+          doneWords={then && text !== '' ? `Next: ${PLACE_LABELS[then]}` : 'Done'}
+          onDone={() => (then && text !== '' ? choose({ at: then }) : setPad(false))}
+        />
+      )}
     </div>
   );
 }

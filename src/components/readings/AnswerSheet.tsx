@@ -1,7 +1,7 @@
 import type { Interpretation } from '../../domain/readings/interpret';
 import type { ReadingQuestion } from '../../domain/readings/reading';
-import { Sheet } from '../../components/ui/Sheet';
-import { Tag, type Tone } from '../../components/ui/Tag';
+import { Sheet } from '../ui/Sheet';
+import { Tag, type Tone } from '../ui/Tag';
 import { PAINT } from './paint';
 import type { Faults } from './form';
 import { chance, helpWords, hueOf, initiatorWords, outcomeWords, reasoning, shownHypotheses } from './words';

@@ -1,5 +1,5 @@
 import { useEffect, useState, useSyncExternalStore } from 'react';
-import { Button } from '../../components/ui/Button';
+import { Button } from '../ui/Button';
 
 /** What the device can do does not change; the server has neither. */
 const never = () => () => undefined;
@@ -7,10 +7,16 @@ const cannot = () => false;
 const canSpeak = () => 'speechSynthesis' in window;
 const canCopy = () => 'clipboard' in navigator;
 
+interface Props {
+  text: string;
+  /** Whether the address says all that is on the page, so that it is worth copying. */
+  link?: boolean;
+}
+
 /** Reads the answer and its cautions, where the device has a voice; copies the address, where it may. */
-export function ReadAloud({ text }: { text: string }) {
+export function ReadAloud({ text, link = true }: Props) {
   const speaks = useSyncExternalStore(never, canSpeak, cannot);
-  const copies = useSyncExternalStore(never, canCopy, cannot);
+  const copies = useSyncExternalStore(never, canCopy, cannot) && link;
   const [speaking, setSpeaking] = useState(false);
   const [note, setNote] = useState('');
   useEffect(

@@ -6,7 +6,7 @@ import {
   type ReadingQuestion,
   type SiblingReading,
 } from '../../domain/readings/reading';
-import { typedNumber, type NumberRange } from '../../lib/typed-number';
+import { typedNumber, type NumberRange } from '../../schemas/typed-number';
 import { SHEET_KEYS, SHEETS, type SheetKey } from './sheets';
 
 /**
@@ -97,6 +97,14 @@ export function formOf(search: URLSearchParams): ReadingForm {
   return form;
 }
 
+/** What the parts of a form are given: its text, what is wrong with it, and ways to change it. */
+export interface PanelProps {
+  form: ReadingForm;
+  faults: Faults;
+  typed: (some: Partial<ReadingForm>) => void;
+  choose: (some: Partial<ReadingForm>) => void;
+}
+
 /** One choice of a list, by its word. */
 export const chosen = <T extends string>(list: readonly T[], word: string, otherwise: T): T =>
   list.find((item) => item === word) ?? otherwise;
@@ -143,8 +151,17 @@ export const RANGES = {
 /** How well a person on a roof measures light and cell temperature; from experience. */
 const MEASURED = { poaRelativeSd: 0.05, temperatureSd: 3 } as const;
 
+/** What is known of the string besides what is typed: then the form's own words for it do not count. */
+export interface KnownString {
+  units: number;
+  unitType: ReadingQuestion['unitType'];
+  module: ModuleType;
+  /** Readings of other strings of the same types, under the same light. */
+  siblings: readonly SiblingReading[];
+}
+
 /** What is asked of the interpreter, or what is wrong with each field. */
-export function readForm(form: ReadingForm): Read {
+export function readForm(form: ReadingForm, known?: KnownString): Read {
   const faults: Faults = {};
   const number: ReadNumber = (key, text, name, range) => {
     const { value, fault } = typedNumber(text, name, range);
@@ -154,9 +171,9 @@ export function readForm(form: ReadingForm): Read {
   const optional = (key: string, name: string, range: NumberRange): number | null =>
     (form[key] ?? '').trim() === '' ? null : number(key, form[key] ?? '', name, range);
 
-  const unitType = UNIT_PRESETS[chosen(UNIT_KINDS, form.kind, 'shutdown_only')];
-  const units = number('units', form.units, 'Units in the string', RANGES.units);
-  const module = readModule(form, number);
+  const unitType = known?.unitType ?? UNIT_PRESETS[chosen(UNIT_KINDS, form.kind, 'shutdown_only')];
+  const units = known?.units ?? number('units', form.units, 'Units in the string', RANGES.units);
+  const module = known?.module ?? readModule(form, number);
   const tells = unitType.kind !== 'shutdown_only';
   const heard = tells
     ? number('heard', form.heard, 'Units that have answered', { min: 0, max: units ?? 63, whole: true })
@@ -187,7 +204,7 @@ export function readForm(form: ReadingForm): Read {
       conditions,
       meter: { ...ORDINARY_METER, mode: chosen(METERS, form.meter, 'high_impedance') },
       voltageV,
-      siblings,
+      siblings: known ? [...known.siblings, ...siblings] : siblings,
       earth: positiveV === null && negativeV === null ? null : { positiveV, negativeV },
     },
   };
