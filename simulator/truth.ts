@@ -77,14 +77,16 @@ export function truthOf(plant: SitePlant, loggers: SiteTruth['loggers']): SiteTr
     }),
     units: plan.strings.flatMap((drawn) =>
       drawn.slots.flatMap((slot, i) => {
-        const seat = slot.serial === null ? undefined : plant.seatOf(slot.serial);
-        if (slot.serial === null || !seat) return [];
+        const there = plan.strangers.find((x) => x.seat?.string === drawn.name && x.seat.position === i + 1);
+        const serial = there?.serial ?? slot.serial;
+        const seat = serial === null ? undefined : plant.seatOf(serial);
+        if (serial === null || !seat) return [];
         const { string: s, index } = seat;
         return [
           {
             string: drawn.name,
             position: i + 1,
-            serial: slot.serial,
+            serial,
             seat: { string: s.plan.name, position: index + 1 },
             mode: MODES[s.mode[index] ?? 0] ?? 'unpowered',
             heard: s.heard[index] === 1,

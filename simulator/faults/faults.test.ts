@@ -2,6 +2,7 @@ import { describe, expect, it } from 'vitest';
 import { frameOf, radioOf } from '../logger/readings';
 import { modesOf, plantOf, run, SINCE, stringOf } from '../plant/support';
 import type { SitePlant } from '../plant/site-plant';
+import type { StringPlant } from '../plant/string-plant';
 import { fault, type Fault } from './kinds';
 
 /** Each fault does to the plant what its name says, and to nothing else. */
@@ -87,6 +88,21 @@ describe('units', () => {
     expect(others(modesOf(plant, 'A1'), 1).every((m) => m === 'passing')).toBe(true);
   });
 
+  it('that sit where the drawing has another serial report under their own, the drawn one never', () => {
+    const plant = plantOf('Old Tannery Market Hall');
+    const b1 = stringOf(plant, 'B1');
+    const stranger = plant.plan.strangers.find((s) => s.seat?.position === 2)!;
+    const drawn = b1.plan.slots[1]?.serial ?? '';
+    expect(plant.seatOf(drawn)).toBeUndefined();
+    expect(plant.seatOf(stranger.serial)).toMatchObject({ string: b1, index: 1 });
+    plant.hear(stranger.serial);
+    const asDrawn = b1.plan.slots.map((s) => s.serial);
+    const radio = radioOf(plant, plant.plan.loggers[0]?.serial ?? '');
+    expect(frameOf(plant, radio, asDrawn)).toBeNull();
+    const placed = asDrawn.map((s) => (s === drawn ? stranger.serial : s));
+    expect(frameOf(plant, radio, placed)?.state[1]).toBe(1);
+  });
+
   it('are unpowered in the dark and tell nothing', () => {
     const plant = plantOf(CLINIC, SINCE - 12 * 3600);
     expect(plant.now.elevation).toBeLessThan(-5);
@@ -146,6 +162,27 @@ describe('modules and wires', () => {
     expect((a8?.current[3] ?? 0) / (a8?.current[2] ?? 1)).toBeLessThan(0.8);
     const a9 = frame(plant, 'A9');
     expect((a9?.current[3] ?? 0) / (a9?.current[2] ?? 1)).toBeGreaterThan(1.2);
+  });
+
+  it('an isolated string carries no current and the others go on', () => {
+    const plant = plantOf('Beacon Street Flats');
+    const pair = plant.inputs.find((i) => i.strings.length === 2)!;
+    const [first, second] = pair.strings as [StringPlant, StringPlant];
+    const before = { first: first.current, input: pair.current };
+    expect(before.first).toBeGreaterThan(0.5);
+    const { id } = plant.faults.add({ kind: 'string_isolated', string: first.plan.name }, plant.atS + 1);
+    run(plant, 5);
+    expect(first.current).toBe(0);
+    expect(first.voltage).toBeGreaterThan(second.voltage * 1.05); // open circuit
+    expect(second.current).toBeGreaterThan(0.5);
+    expect(pair.current / before.input).toBeCloseTo(0.5, 1);
+    const alone = plant.inputs.find((i) => i.strings.length === 1)!;
+    plant.faults.add({ kind: 'string_isolated', string: alone.strings[0]!.plan.name }, plant.atS + 1);
+    run(plant, 5);
+    expect([alone.current, alone.voltage]).toEqual([0, 0]);
+    plant.faults.clear(id, plant.atS + 1);
+    run(plant, 5);
+    expect(first.current).toBeGreaterThan(0.5);
   });
 });
 

@@ -30,6 +30,8 @@ export const fault = z.discriminatedUnion('kind', [
     otherString: string,
     otherPosition: position,
   }),
+  /** Somebody has opened the string's own load-break switch: it carries no current. */
+  z.strictObject({ kind: z.literal('string_isolated'), string }),
   /** A connector of the string has gone bad. */
   z.strictObject({ kind: z.literal('connector'), string, ohm: z.number().min(0).max(50) }),
   z.strictObject({ kind: z.literal('soiling'), string, share: z.number().min(0).max(0.9) }),
@@ -93,6 +95,7 @@ export const FAULT_WORDS: Record<FaultKind, string> = {
   unit_mute: 'Unit whose radio is dead',
   bypass_diode: 'Failed bypass diode',
   wrong_string: 'Two units in each other’s place',
+  string_isolated: 'String isolated by its load-break switch',
   connector: 'Connector gone bad',
   soiling: 'Dirt on a string',
   shade: 'Shade on positions of a string',

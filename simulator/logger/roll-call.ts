@@ -40,7 +40,7 @@ export class RollCall {
           this.expected.set(serial, atS + this.delay(serial));
     }
     for (const stranger of this.site.plan.strangers)
-      if (stranger.logger === this.logger)
+      if (stranger.logger === this.logger && !this.site.heard.has(stranger.serial))
         this.expected.set(stranger.serial, atS + (60 + 240 * this.draw(stranger.serial, 3)) / this.pace);
   }
 
@@ -68,7 +68,8 @@ export class RollCall {
       if (dueS > atS) continue;
       const seat = this.site.seatOf(serial);
       if (!seat) {
-        rows.push(this.stranger(serial, atS));
+        // a serial of the drawing that sits nowhere never answers
+        if (this.site.plan.strangers.some((s) => s.serial === serial)) rows.push(this.stranger(serial, atS));
         this.expected.delete(serial);
         continue;
       }

@@ -64,6 +64,7 @@ const FIELDS: Record<FaultKind, string[]> = {
   unit_mute: ['string', 'position'],
   bypass_diode: ['string', 'position', 'groups'],
   wrong_string: ['string', 'position', 'otherString', 'otherPosition'],
+  string_isolated: ['string'],
   connector: ['string', 'ohm'],
   soiling: ['string', 'share'],
   shade: ['string', 'positions', 'fromHour', 'toHour', 'share'],

@@ -27,6 +27,11 @@ export class InputPlant {
     this.shares = strings.map(() => new Float64Array(IN_SHADE.length));
   }
 
+  /** Strings whose load-break switch is closed. */
+  get connected(): StringPlant[] {
+    return this.strings.some((s) => s.isolated) ? this.strings.filter((s) => !s.isolated) : this.strings;
+  }
+
   get optimizing(): boolean {
     return this.strings[0]?.unitType.kind === 'optimizing';
   }
@@ -36,7 +41,7 @@ export class InputPlant {
     let highest = 0;
     for (const s of this.strings) {
       settle(s, 0);
-      highest = Math.max(highest, s.voltage);
+      if (!s.isolated) highest = Math.max(highest, s.voltage);
     }
     this.voltage = highest;
     this.current = 0;
@@ -50,33 +55,36 @@ export class InputPlant {
    * @param wobble relative error of the tracker's current
    */
   track(limit = Infinity, wobble = 0): void {
+    const connected = this.connected;
+    if (connected.length === 0) return this.openCircuit();
+    for (const s of this.strings) if (s.isolated) settle(s, 0);
     if (this.optimizing) {
       this.trackOptimizing(limit);
       return;
     }
     this.sample();
-    if (this.strings.length === 1) this.trackAlone(limit, wobble);
+    if (connected.length === 1) this.trackAlone(limit, wobble);
     else this.trackTogether(limit, wobble);
   }
 
   private finish(): void {
     let amps = 0;
     let volts = 0;
-    for (const s of this.strings) {
+    for (const s of this.connected) {
       amps += s.current;
       volts += s.voltage - s.current * s.resistance;
     }
     this.current = amps;
-    this.voltage = volts / this.strings.length;
+    this.voltage = volts / this.connected.length;
     this.power = this.current * this.voltage;
   }
 
   private sample(): void {
-    const uneven = this.strings.length > 1 || this.strings.some((s) => s.shadedGroups.some((g) => g > 0));
+    const uneven = this.connected.length > 1 || this.connected.some((s) => s.shadedGroups.some((g) => g > 0));
     const samples = uneven ? IN_SHADE : IN_FULL_LIGHT;
     this.samples = samples.length;
-    for (let k = 0; k < this.strings.length; k++) {
-      const s = this.strings[k]!;
+    for (let k = 0; k < this.connected.length; k++) {
+      const s = this.connected[k]!;
       const amps = this.shares[k]!;
       const volts = this.curves[k]!;
       const most = largestPhotocurrent(s);
@@ -88,7 +96,7 @@ export class InputPlant {
   }
 
   private trackAlone(limit: number, wobble: number): void {
-    const s = this.strings[0]!;
+    const s = this.connected[0]!;
     const amps = this.shares[0]!;
     const volts = this.curves[0]!;
     let best = 0;
@@ -123,7 +131,7 @@ export class InputPlant {
 
   private totalAt(volts: number): number {
     let amps = 0;
-    for (let k = 0; k < this.strings.length; k++) amps += this.currentAt(k, volts);
+    for (let k = 0; k < this.connected.length; k++) amps += this.currentAt(k, volts);
     return amps;
   }
 
@@ -155,7 +163,7 @@ export class InputPlant {
       }
       volts = high;
     }
-    this.strings.forEach((s, k) => {
+    this.connected.forEach((s, k) => {
       settle(s, refine(s, volts, this.currentAt(k, volts)));
     });
     this.finish();
@@ -163,44 +171,68 @@ export class InputPlant {
     this.power = volts * this.current;
   }
 
-  /** Each unit finds its own module's best point; one current runs on the output side. */
+  /**
+   * Each unit finds its own module's best point; one current runs on the output side of a string. The inverter holds
+   * the input at a voltage that every string of it can reach, and a string's current follows from its power.
+   */
   private trackOptimizing(limit: number): void {
-    const s = this.strings[0]!;
-    const powers = new Float64Array(s.size);
-    let total = 0;
-    let amps = 0;
-    const knee = kneeShare(s);
-    for (let i = 0; i < s.size; i++) {
-      if (s.mode[i] !== PASSING) continue;
-      let best = 0;
-      for (const share of (s.shadedGroups[i] ?? 0) > 0 ? [0.2, 0.35, 0.5, 0.7, knee] : [knee]) {
-        const at = share * (s.photocurrent[i] ?? 0);
-        const volts = moduleVoltage(s, i, at);
-        if (volts * at > best) {
-          best = volts * at;
-          s.voltageIn[i] = volts;
-        }
-      }
-      powers[i] = best * OPTIMIZING_EFFICIENCY;
-      total += powers[i]!;
-      // A unit lowers voltage and never raises it: the current must be at least the strongest module's.
-      amps = Math.max(amps, best / Math.max(1, s.voltageIn[i]!));
-    }
-    if (total <= 0 || amps <= 0) return this.openCircuit();
+    const found = this.connected.map(bestOfEach);
+    const total = found.reduce((sum, f) => sum + f.total, 0);
+    if (!(total > 0)) return this.openCircuit();
     const kept = Math.min(1, limit / total);
-    const current = amps * 1.03 * kept;
-    s.current = current;
-    s.voltage = 0;
-    for (let i = 0; i < s.size; i++) {
-      if (s.mode[i] === PASSING) s.voltageOut[i] = (powers[i]! * kept) / current;
-      else {
-        s.voltageOut[i] = s.bypassVoltage[i]!;
-        s.voltageIn[i] = moduleVoltage(s, i, 0.01);
+    let volts = Infinity;
+    found.forEach((f, k) => {
+      // A unit lowers voltage and never raises it: the current must be at least the strongest module's.
+      const least = f.amps * 1.03;
+      if (f.total > 0) volts = Math.min(volts, f.total / least - least * this.connected[k]!.resistance);
+    });
+    this.connected.forEach((s, k) => {
+      const { total: watts, powers } = found[k]!;
+      const ohm = s.resistance;
+      // watts = current · (volts + current · ohm)
+      const current = (Math.sqrt(volts * volts + 4 * ohm * watts * kept) - volts) / (2 * ohm);
+      if (!(watts > 0 && current > 0)) return settle(s, 0);
+      s.current = current;
+      s.voltage = 0;
+      for (let i = 0; i < s.size; i++) {
+        if (s.mode[i] === PASSING) s.voltageOut[i] = (powers[i]! * kept) / current;
+        else {
+          s.voltageOut[i] = s.bypassVoltage[i]!;
+          s.voltageIn[i] = moduleVoltage(s, i, 0.01);
+        }
+        s.voltage += s.voltageOut[i]!;
       }
-      s.voltage += s.voltageOut[i]!;
-    }
+    });
     this.finish();
+    if (this.connected.length > 1) {
+      this.voltage = volts;
+      this.power = volts * this.current;
+    }
   }
+}
+
+/** What each optimizing unit of a string gets out of its module, W, their sum, and the strongest module's current, A. */
+function bestOfEach(s: StringPlant): { powers: Float64Array; total: number; amps: number } {
+  const powers = new Float64Array(s.size);
+  let total = 0;
+  let amps = 0;
+  const knee = kneeShare(s);
+  for (let i = 0; i < s.size; i++) {
+    if (s.mode[i] !== PASSING) continue;
+    let best = 0;
+    for (const share of (s.shadedGroups[i] ?? 0) > 0 ? [0.04, 0.09, 0.2, 0.35, 0.5, 0.7, knee] : [knee]) {
+      const at = share * (s.photocurrent[i] ?? 0);
+      const volts = moduleVoltage(s, i, at);
+      if (volts * at > best) {
+        best = volts * at;
+        s.voltageIn[i] = volts;
+      }
+    }
+    powers[i] = best * OPTIMIZING_EFFICIENCY;
+    total += powers[i]!;
+    amps = Math.max(amps, best / Math.max(1, s.voltageIn[i]!));
+  }
+  return { powers, total, amps };
 }
 
 /** The current of most power by a parabola through the best sample and its neighbours. */

@@ -90,7 +90,7 @@ export class InverterPlant {
     for (const input of this.inputs) {
       let highest = 0;
       let watts = 0;
-      for (const s of input.strings) {
+      for (const s of input.connected) {
         const volts = openVoltage(s);
         highest = Math.max(highest, volts);
         watts += 0.75 * volts * (s.photocurrent[0] ?? 0);

@@ -63,7 +63,7 @@ export interface SitePlan {
   /** Things that stand on or beside the roof and throw shade. */
   obstacles: ObstaclePlan[];
   /** Units that answer a roll call and are on no drawing. */
-  strangers: { serial: string; logger: string; gateway: number }[];
+  strangers: StrangerPlan[];
   /** Faults that are there from the start; `sinceS` seconds before the fleet's `since`. */
   faults: PresetFault[];
   /** Initiators that stand open from the start, for so many seconds before the fleet's `since`. */
@@ -121,6 +121,14 @@ export interface SlotPlan {
   roofPlace: string;
   /** Number of the gateway that hears the unit best. */
   gateway: number;
+}
+
+export interface StrangerPlan {
+  serial: string;
+  logger: string;
+  gateway: number;
+  /** Where it really sits: the serial that the drawing has there is nowhere. Absent: on no slot of the site. */
+  seat?: { string: string; position: number };
 }
 
 /** What the weather of a place is like; the simulator makes the days from it. */

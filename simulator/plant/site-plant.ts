@@ -255,6 +255,7 @@ export class SitePlant {
         if (f.string === name && f.position <= s.size) s.shortedGroups[f.position - 1] = f.groups;
       s.resistance = this.resistances[k] ?? s.resistance;
       for (const f of ofKind(faults, 'connector')) if (f.string === name) s.resistance += f.ohm;
+      s.isolated = ofKind(faults, 'string_isolated').some((f) => f.string === name);
       this.soiled.set(s, 1);
       for (const f of ofKind(faults, 'soiling')) if (f.string === name) this.soiled.set(s, 1 - f.share);
       if (!ofKind(faults, 'shade').some((f) => f.string === name)) {
@@ -268,6 +269,13 @@ export class SitePlant {
       s.plan.slots.forEach((slot, index) => {
         if (slot.serial !== null) this.seats.set(slot.serial, { string: s, index });
       });
+    for (const { serial, seat } of this.plan.strangers) {
+      const string = seat && this.byName.get(seat.string);
+      const drawn = string?.plan.slots[seat.position - 1]?.serial;
+      if (!string || !drawn) continue;
+      this.seats.delete(drawn);
+      this.seats.set(serial, { string, index: seat.position - 1 });
+    }
     for (const f of ofKind(faults, 'wrong_string')) this.swap(f);
     for (const [serial, { string, index }] of this.seats) {
       string.serials[index] = serial;

@@ -46,6 +46,8 @@ export class StringPlant {
   readonly shadeLoss: Float64Array;
   /** Groups of cells that their diode shorts. */
   readonly shortedGroups: Uint8Array;
+  /** Its load-break switch is open: no current, whatever its input does. */
+  isolated = false;
 
   // ---- what the last solution found ----
   readonly irradiance: Float64Array;

@@ -61,14 +61,16 @@ export const LOWFIELD_SITES: DemoSite[] = [
       inputsPerInverter: 7,
       climate: { fairToday: true, clearShare: 0.6, cloudyShare: 0.1 },
       strangers: [
-        { gateway: 2, near: 'B1' },
-        { gateway: 2, near: 'B1' },
+        { gateway: 1, seat: { string: 'B1', position: 2, misread: true } },
+        { gateway: 1, seat: { string: 'B1', position: 9, misread: false } },
       ],
       faults: [
         { fault: { kind: 'stuck', string: 'B3', position: 5, at: 'next_release' }, sinceS: 0 },
         { fault: { kind: 'stuck', string: 'B3', position: 9, at: 'next_release' }, sinceS: 0 },
-        { fault: { kind: 'unit_mute', string: 'B1', position: 2 }, sinceS: 0 },
-        { fault: { kind: 'unit_mute', string: 'B1', position: 9 }, sinceS: 0 },
+        {
+          fault: { kind: 'wrong_string', string: 'C3', position: 4, otherString: 'D1', otherPosition: 4 },
+          sinceS: 0,
+        },
         { fault: { kind: 'unit_mute', string: 'C2', position: 7 }, sinceS: 0 },
       ],
     },

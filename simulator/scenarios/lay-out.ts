@@ -51,7 +51,11 @@ export interface SiteSpec {
   oversizing?: number;
   climate?: Partial<ClimatePlan>;
   obstacles?: ObstaclePlan[];
-  strangers?: { gateway: number; near: string }[];
+  strangers?: {
+    gateway: number;
+    /** Where it really sits; `misread`: its label was copied wrongly, else another unit was put there than drawn. */
+    seat?: { string: string; position: number; misread: boolean };
+  }[];
   faults?: SitePlan['faults'];
   openInitiators?: SitePlan['openInitiators'];
 }
@@ -72,6 +76,22 @@ function serialOf(batch: string, n: number, key: number): string {
   const body = (n * 0x9e5 + (key & 0xfff)) & 0xffff;
   const check = mix(key, n) & 0xff;
   return `${batch}-${hex(body, 4)}-${hex(check, 2)}`;
+}
+/** The label as it is where the drawing has a copy of it with one character taken for another. */
+function misread(serial: string): string {
+  const alike: Record<string, string> = {
+    '8': 'B',
+    B: '8',
+    '0': 'D',
+    D: '0',
+    '1': '7',
+    '7': '1',
+    '5': '6',
+    '6': '5',
+  };
+  const at = [...serial].findLastIndex((c) => c in alike);
+  if (at < 0) return `${serial.slice(0, -1)}${serial.endsWith('3') ? '9' : '3'}`;
+  return serial.slice(0, at) + (alike[serial[at] ?? ''] ?? '') + serial.slice(at + 1);
 }
 const hex = (n: number, digits: number) => n.toString(16).toUpperCase().padStart(digits, '0');
 
@@ -207,11 +227,15 @@ export function layOut(
       ...spec.climate,
     },
     obstacles: spec.obstacles ?? [],
-    strangers: (spec.strangers ?? []).map((s, i) => ({
-      serial: serialOf(batch, 9000 + i, chance),
-      logger,
-      gateway: s.gateway,
-    })),
+    strangers: (spec.strangers ?? []).map(({ gateway, seat }, i) => {
+      const drawn = strings.find((s) => s.name === seat?.string)?.slots[(seat?.position ?? 0) - 1]?.serial;
+      return {
+        serial: seat?.misread && drawn ? misread(drawn) : serialOf(batch, 9000 + i, chance),
+        logger,
+        gateway,
+        ...(seat ? { seat: { string: seat.string, position: seat.position } } : {}),
+      };
+    }),
     faults: spec.faults ?? [],
     openInitiators: spec.openInitiators ?? [],
   };

@@ -1,6 +1,6 @@
-/** Families of the equipment catalogue, as addresses name them. */
-export const EQUIPMENT_FAMILIES = ['modules', 'units', 'connectors', 'inverters'] as const;
-export type EquipmentFamily = (typeof EQUIPMENT_FAMILIES)[number];
+import { EQUIPMENT_FAMILIES, type EquipmentFamily } from '../domain/equipment/families';
+
+export { EQUIPMENT_FAMILIES, type EquipmentFamily };
 
 /** Every URL of the product is built here, for pages and the API alike. */
 export const paths = {
@@ -33,6 +33,8 @@ export const paths = {
   equipment: () => '/equipment',
   equipmentList: (family: EquipmentFamily) => `/equipment/${family}`,
   equipmentType: (family: EquipmentFamily, type: string) => `/equipment/${family}/${type}`,
+  equipmentNew: (family: EquipmentFamily) => `/equipment/${family}/new`,
+  equipmentImport: (family: EquipmentFamily) => `/equipment/${family}/import`,
   mail: () => '/mail',
   shutdown: () => '/shutdown',
   customer: (site: string) => `/my-site/${site}`,
@@ -59,10 +61,23 @@ export const paths = {
     rollCall: (site: string) => `/api/sites/${site}/roll-call`,
     rollCallCsv: (site: string) => `/api/sites/${site}/roll-call/units.csv`,
     rollCallStop: (site: string) => `/api/sites/${site}/roll-call/stop`,
+    /** Serials put into slots from what was heard and seen: place, replace, move, swap. */
+    rollCallPlace: (site: string) => `/api/sites/${site}/roll-call/place`,
+    walk: (site: string) => `/api/sites/${site}/walk`,
+    walkCsv: (site: string) => `/api/sites/${site}/walk/stops.csv`,
+    membership: (site: string) => `/api/sites/${site}/membership`,
+    membershipCsv: (site: string) => `/api/sites/${site}/membership/units.csv`,
+    membershipCurrents: (site: string) => `/api/sites/${site}/membership/currents`,
+    isolation: (site: string) => `/api/sites/${site}/isolation`,
+    isolationStop: (site: string) => `/api/sites/${site}/isolation/stop`,
+    commissioningCsv: () => '/api/commissioning.csv',
     equipment: (family: EquipmentFamily) => `/api/equipment/${family}`,
     equipmentCsv: (family: EquipmentFamily) => `/api/equipment/${family}.csv`,
     equipmentType: (family: EquipmentFamily, type: string) => `/api/equipment/${family}/${type}`,
+    equipmentImport: (family: EquipmentFamily) => `/api/equipment/${family}/import`,
     connectorPairs: () => '/api/equipment/connector-pairs',
+    connectorPair: (pair: string) => `/api/equipment/connector-pairs/${pair}`,
+    designChecksCsv: (site: string) => `/api/sites/${site}/design.csv`,
     sites: () => '/api/sites',
     asBuilt: (site: string) => `/api/sites/${site}/as-built`,
     asBuiltCsv: (site: string) => `/api/sites/${site}/as-built.csv`,
