@@ -21,3 +21,16 @@ export interface ModuleType {
   /** Nominal operating cell temperature, °C. */
   noct: number;
 }
+
+/** All that the catalogue says of a module. */
+export interface ModuleSheet extends ModuleType {
+  /** V */
+  voltageSystemMax: number;
+  /** A, of a fuse in series with a string. */
+  fuseMax: number;
+  /** m */
+  lengthM: number;
+  widthM: number;
+  /** Connector type of its leads; null: not entered. */
+  connector: string | null;
+}

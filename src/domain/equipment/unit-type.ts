@@ -57,3 +57,14 @@ export const UNIT_PRESETS: Record<UnitKind, Preset> = {
   monitored: { ...SHARED, kind: 'monitored', outOfBox: 'passing', releasedBy: 'logger', measures: 'output' },
   optimizing: { ...SHARED, kind: 'optimizing', outOfBox: 'passing', releasedBy: 'logger', measures: 'both' },
 };
+
+/** All that the catalogue says of a unit. */
+export interface UnitSheet extends UnitType {
+  /** V */
+  voltageSystemMax: number;
+  /** W of the module behind it. */
+  powerMax: number;
+  /** Connector types towards the module and towards the neighbours; null: not entered. */
+  connectorIn: string | null;
+  connectorOut: string | null;
+}

@@ -1,4 +1,4 @@
-import { typedNumber } from '../../lib/typed-number';
+import { typedNumber } from '../../schemas/typed-number';
 
 /** A small live example: fields with a starting value, and the judgement's own function behind them. */
 
