@@ -1,0 +1,287 @@
+/** The cells of an import one by one: numbers, serials, names. What belongs to whole strings is in read-strings. */
+import type { ImportColumn } from './columns';
+import { COLUMN_LABELS } from './columns';
+import { NameBook, nearestName } from './names';
+import { decimalMarkOf, readNumber, type DecimalMark } from './number';
+import { readSerial } from './serial';
+import {
+  bareName,
+  NAME_COLUMNS,
+  type CellFault,
+  type FaultCode,
+  type ImportChoices,
+  type ImportTable,
+  type KnownNames,
+  type NameColumn,
+} from './table';
+
+/** What one row says; undefined: its cell is faulty, null: it says nothing. */
+export interface RawRow {
+  line: number;
+  string: string | undefined;
+  position: number | undefined;
+  serial: string | null | undefined;
+  input: { inverter: string; number: number } | null | undefined;
+  transmitters: readonly string[] | null | undefined;
+  unitType: string | null | undefined;
+  moduleType: string | null | undefined;
+  plane: string | null | undefined;
+  zone: string | null | undefined;
+  logger: string | null | undefined;
+  roofX: number | null | undefined;
+  roofY: number | null | undefined;
+  roofPlace: string | null | undefined;
+}
+
+export const POSITION_MAX = 63;
+const ROOF_MAX_M = 5000;
+const PLACE_MAX = 200;
+
+/** Collects faults of cells. */
+export class Faults {
+  readonly list: CellFault[] = [];
+  add(
+    row: number,
+    column: ImportColumn,
+    code: FaultCode,
+    message: string,
+    remedy: string,
+    more: { suggestion?: string | null; weight?: CellFault['weight'] } = {},
+  ): void {
+    const { suggestion = null, weight = 'fault' } = more;
+    this.list.push({ row, column, code, message, remedy, suggestion, weight });
+  }
+}
+
+function booksOf(names: KnownNames, choices: ImportChoices): Record<NameColumn, NameBook> {
+  const of: Record<NameColumn, readonly string[]> = {
+    unitType: names.unitTypes.map((t) => t.name),
+    moduleType: names.moduleTypes,
+    plane: names.planes,
+    inverter: [...new Set(names.inputs.map((i) => i.inverter))],
+    zone: names.zones,
+    logger: names.loggers,
+    transmitters: names.transmitters,
+  };
+  return Object.fromEntries(NAME_COLUMNS.map((c) => [c, new NameBook(of[c], choices.meanings[c])])) as Record<
+    NameColumn,
+    NameBook
+  >;
+}
+
+/** Reads a position: a whole number from 1 to 63, however its decimals are written. */
+function readPosition(text: string, line: number, faults: Faults): number | undefined {
+  const add = (code: FaultCode, message: string, remedy: string, suggestion: string | null = null) => {
+    faults.add(line, 'position', code, message, remedy, { suggestion });
+    return undefined;
+  };
+  const read = readNumber(text.replace(/^\s*(?:pos(?:ition)?|no|nr|#)\.?\s*(?=\d)/i, ''));
+  const range = `Positions count from 1 at the negative end to ${POSITION_MAX}.`;
+  if (read.kind === 'empty') return add('position_empty', 'the position is empty', range);
+  if (read.kind === 'fault') return add('position_number', read.message, range);
+  const value = read.kind === 'ambiguous' ? read.asThousands : read.value;
+  if (!Number.isInteger(value)) return add('position_number', `"${text.trim()}" is no whole number`, range);
+  if (value < 1 || value > POSITION_MAX)
+    return add('position_range', `position ${value} can't be`, `${range} Is this the right column?`);
+  return value;
+}
+
+function readRoof(
+  text: string,
+  column: 'roofX' | 'roofY',
+  line: number,
+  mark: DecimalMark | null,
+  faults: Faults,
+): number | null | undefined {
+  const read = readNumber(text.replace(/\s*m$/i, ''), mark);
+  if (read.kind === 'empty') return null;
+  if (read.kind === 'fault') {
+    faults.add(line, column, 'number_fault', read.message, 'Write metres as a number, like 12.5.');
+    return undefined;
+  }
+  if (read.kind === 'ambiguous') {
+    faults.add(
+      line,
+      column,
+      'number_ambiguous',
+      `"${text.trim()}" could be ${read.asDecimal} or ${read.asThousands}`,
+      'Say above which mark stands before the decimals in this file.',
+    );
+    return undefined;
+  }
+  if (Math.abs(read.value) > ROOF_MAX_M) {
+    faults.add(
+      line,
+      column,
+      'number_fault',
+      `${read.value} m is no place on a roof`,
+      'Metres from one corner of the roof are expected; is this the right column?',
+    );
+    return undefined;
+  }
+  return read.value;
+}
+
+/** `Inverter 1/2`, `2`, `MPPT 2`, beside an inverter's name or, where the site has one inverter only, without. */
+function readInput(
+  text: string,
+  inverter: string | null | undefined,
+  line: number,
+  names: KnownNames,
+  faults: Faults,
+): RawRow['input'] {
+  if (text === '' || inverter === undefined) return text === '' ? null : undefined;
+  const whole = names.inputs.find(
+    (i) => bareName(`${i.inverter}/${i.number}`) === bareName(text).replace(/\s*\/\s*/, '/'),
+  );
+  if (whole && (inverter === null || inverter === whole.inverter)) return whole;
+  const inverters = [...new Set(names.inputs.map((i) => i.inverter))];
+  const owner = inverter ?? (inverters.length === 1 ? inverters[0] : undefined);
+  const listed = (owner === undefined ? names.inputs : names.inputs.filter((i) => i.inverter === owner))
+    .slice(0, 8)
+    .map((i) => `${i.inverter}/${i.number}`)
+    .join(', ');
+  const remedy = listed
+    ? `Inputs here: ${listed}. Add others on the as-built page.`
+    : 'Enter the inverter and its inputs on the as-built page first.';
+  const number = /(\d+)\s*$/.exec(text)?.[1];
+  if (owner === undefined) {
+    faults.add(
+      line,
+      'input',
+      'name_unknown',
+      `input "${text}" names no inverter, and the site has several`,
+      remedy,
+    );
+    return undefined;
+  }
+  const found = names.inputs.find((i) => i.inverter === owner && i.number === Number(number));
+  if (found) return found;
+  faults.add(line, 'input', 'name_unknown', `${owner} has no input "${text}"`, remedy);
+  return undefined;
+}
+
+/** Every cell of the table, faults added to `faults`. `onRow` is told how far it is. */
+export function readRows(
+  table: ImportTable,
+  choices: ImportChoices,
+  names: KnownNames,
+  faults: Faults,
+  onRow?: (done: number) => void,
+): RawRow[] {
+  const at = new Map(table.columns.map((c, i) => [c, i]));
+  const column = (c: ImportColumn): string[] => {
+    const i = at.get(c);
+    return i === undefined ? [] : table.rows.map((r) => r[i] ?? '');
+  };
+  const marks = {
+    roofX: choices.decimalMark ?? decimalMarkOf([...column('roofX'), ...column('roofY')]),
+  };
+  const books = booksOf(names, choices);
+  const strings = new NameBook(names.strings.map((s) => s.name));
+  const madeHere = new Map<string, string>();
+  let above = '';
+  const rows: RawRow[] = [];
+  table.rows.forEach((cells, n) => {
+    const line = table.lines[n] ?? n + 1;
+    const cell = (c: ImportColumn): string => {
+      const i = at.get(c);
+      return i === undefined ? '' : (cells[i] ?? '').trim().replace(/^'(?=[=+\-@])/, '');
+    };
+    const named = (c: NameColumn, text = cell(c)): string | null | undefined => {
+      if (text === '') return null;
+      const found = books[c].find(text);
+      if (found !== undefined) return found;
+      const known = books[c].names;
+      const suggestion = nearestName(text, known);
+      const some = known.slice(0, 5).join(', ');
+      faults.add(
+        line,
+        c,
+        'name_unknown',
+        `there is no ${COLUMN_LABELS[c].replace(/s$/, '')} "${text}"`,
+        suggestion
+          ? `Is "${suggestion}" meant?`
+          : some
+            ? `Known: ${some}${known.length > 5 ? ` and ${known.length - 5} more` : ''}. Say below which one is meant.`
+            : `None is entered yet. Enter it on the ${c === 'unitType' || c === 'moduleType' ? 'equipment' : 'as-built'} page first.`,
+        { suggestion },
+      );
+      return undefined;
+    };
+    const readString = (): string | undefined => {
+      let text = cell('string');
+      if (text === '' && choices.fillDown) text = above;
+      if (text === '') {
+        faults.add(
+          line,
+          'string',
+          'string_empty',
+          'the string is empty',
+          above ? 'Enter its name, or say above that blank cells mean the string above.' : 'Enter its name.',
+          { suggestion: above || null },
+        );
+        return undefined;
+      }
+      above = text;
+      if (text.length > 40) {
+        faults.add(
+          line,
+          'string',
+          'string_name',
+          `the name has ${text.length} characters`,
+          'A string has a name of at most 40, like B3. Is this the right column?',
+        );
+        return undefined;
+      }
+      const bare = bareName(text);
+      const name = strings.find(text) ?? madeHere.get(bare);
+      if (name === undefined) madeHere.set(bare, text);
+      return name ?? text;
+    };
+    const readUnit = (): string | null | undefined => {
+      const read = readSerial(cell('serial'));
+      if (read.kind === 'empty') return null;
+      if (read.kind === 'serial') return read.serial;
+      faults.add(line, 'serial', 'serial_format', read.message, read.remedy, { suggestion: read.suggestion });
+      return undefined;
+    };
+    const place = cell('roofPlace');
+    if (place.length > PLACE_MAX)
+      faults.add(
+        line,
+        'roofPlace',
+        'text_long',
+        `the place has ${place.length} characters`,
+        `Say it in at most ${PLACE_MAX}.`,
+      );
+    const inverter = named('inverter');
+    const senders = cell('transmitters')
+      .split(/\s*[;,]\s*/)
+      .filter(Boolean)
+      .map((t) => named('transmitters', t));
+    rows.push({
+      line,
+      string: readString(),
+      position: readPosition(cell('position'), line, faults),
+      serial: readUnit(),
+      input: readInput(cell('input'), inverter, line, names, faults),
+      transmitters:
+        senders.length === 0
+          ? null
+          : senders.includes(undefined)
+            ? undefined
+            : senders.filter((s) => typeof s === 'string'),
+      unitType: named('unitType'),
+      moduleType: named('moduleType'),
+      plane: named('plane'),
+      zone: named('zone'),
+      logger: named('logger'),
+      roofX: readRoof(cell('roofX'), 'roofX', line, marks.roofX, faults),
+      roofY: readRoof(cell('roofY'), 'roofY', line, marks.roofX, faults),
+      roofPlace: place === '' ? null : place.length > PLACE_MAX ? undefined : place,
+    });
+    if (onRow && n % 500 === 499) onRow(n + 1);
+  });
+  return rows;
+}
