@@ -1,7 +1,8 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { generator } from '../output/sample-plane';
-import { isolationFinding, type IsolationWatch, type WatchedUnit } from './isolation';
+import { isolationFinding } from './isolation';
+import type { IsolationWatch, WatchedUnit } from './isolation-watch';
 
 /**
  * A site of four strings of six units, two strings an input; each string has a current of its own under a common sky.

@@ -1,4 +1,22 @@
 import { median } from '../output/robust';
+import { byInputOnly, inputsAt } from './isolation-inputs';
+import {
+  BEFORE_MIN_A,
+  CLEAR_OF_ZERO,
+  IN_A_ROW,
+  MAJORITY,
+  TOGETHER_INTERVALS,
+  ZERO_A,
+  ZERO_SHARE,
+  currentBefore,
+  type Between,
+  type IsolationFinding,
+  type IsolationOutcome,
+  type IsolationWatch,
+  type UnitFate,
+  type UnitResult,
+  type WatchedUnit,
+} from './isolation-watch';
 
 /**
  * The decisive way to learn which units sit in a string: a person isolates one string by its load-break device, and
@@ -8,116 +26,6 @@ import { median } from '../output/robust';
  * rest of the site kept (`shared`: the median, over units that the drawing has elsewhere, of current now over current
  * before). A unit counts as dropped where it reads zero while it should, by that share, carry a clear current.
  */
-
-export interface CurrentSample {
-  atS: number;
-  /** null: not reported. */
-  current: number | null;
-}
-export interface WatchedUnit {
-  serial: string;
-  string: string;
-  position: number;
-  samples: readonly CurrentSample[];
-}
-/** An input's own measurement: what is left where units tell nothing. */
-export interface WatchedInput {
-  name: string;
-  /** Strings on it, by the drawing. */
-  strings: readonly string[];
-  samples: readonly CurrentSample[];
-}
-export interface IsolationWatch {
-  /** The string that the person on site isolates. */
-  string: string;
-  startedAtS: number;
-  nowS: number;
-  reportIntervalS: number;
-  units: readonly WatchedUnit[];
-  inputs: readonly WatchedInput[];
-}
-
-/** Between which two reports something happened. */
-export interface Between {
-  afterS: number;
-  byS: number;
-}
-export type UnitFate =
-  | 'member_dropped'
-  | 'member_kept'
-  | 'other_dropped'
-  | 'other_kept'
-  /** No report since, or too little current to part zero from the rest. */
-  | 'not_told';
-export interface UnitResult {
-  serial: string;
-  string: string;
-  position: number;
-  fate: UnitFate;
-  /** A, median before the start; null: none. */
-  before: number | null;
-  /** A, while the string was isolated; the newest value before that. */
-  during: number | null;
-  dropped: Between | null;
-}
-export interface InputResult {
-  name: string;
-  strings: string[];
-  before: number | null;
-  during: number | null;
-  /** Share of its current lost beyond what all inputs lost, 0 … 1. */
-  lost: number | null;
-}
-export type IsolationOutcome =
-  /** Nothing has dropped yet. */
-  | 'watching'
-  /** The string dropped: who is in it is told. */
-  | 'told'
-  /** Another string than the one named dropped. */
-  | 'other_string'
-  /** Two strings or more dropped together. */
-  | 'several_strings'
-  /** Only the input's current tells: the string's units report nothing. */
-  | 'input_only'
-  | 'cant_tell';
-export interface IsolationFinding {
-  outcome: IsolationOutcome;
-  /** Why it can't be told; null otherwise. */
-  reason:
-    | 'no_current_before'
-    | 'no_reports'
-    | 'everything_stopped'
-    | 'too_little_current'
-    | 'nothing_beside'
-    | null;
-  /** Strings of which more than half of the units dropped, by the drawing. */
-  strings: string[];
-  /** When, as an interval of reports; null: not seen. */
-  dropped: Between | null;
-  /** When current came back; null: not yet. */
-  returned: Between | null;
-  units: UnitResult[];
-  inputs: InputResult[];
-}
-
-/** Reads as no current, A: rounding of a report and its offset. From experience, twice a unit's resolution error. */
-export const ZERO_A = 0.06;
-/** And no more than this share of what the unit would otherwise carry. */
-const ZERO_SHARE = 0.04;
-/** Less than this before the start says nothing, A. */
-export const BEFORE_MIN_A = 0.3;
-/** What a unit should carry, over ZERO_A, before "zero" means anything: clouds must leave four times the noise. */
-const CLEAR_OF_ZERO = 4;
-/** How far back the current before is taken, in report intervals. */
-const BEFORE_INTERVALS = 6;
-/** Reports in a row that must agree. */
-const IN_A_ROW = 2;
-/** A unit outside the string belongs to the drop when both fell within so many report intervals. */
-const TOGETHER_INTERVALS = 1.5;
-/** Share of a string's units that must drop before the string is said to have dropped. */
-const MAJORITY = 0.5;
-/** An input has lost a string when it lost at least this share of one string's part of its current. */
-const INPUT_SHARE = 0.6;
 
 interface Traced {
   unit: WatchedUnit;
@@ -134,7 +42,7 @@ interface Traced {
  */
 export function isolationFinding(watch: IsolationWatch): IsolationFinding {
   const traced = watch.units.map((unit) => trace(unit, watch));
-  const inputs = watch.inputs.map((i) => ({ input: i, before: before(i.samples, watch) }));
+  const inputs = watch.inputs.map((i) => ({ input: i, before: currentBefore(i.samples, watch) }));
   const result = (outcome: IsolationOutcome, more: Partial<IsolationFinding> = {}): IsolationFinding => ({
     outcome,
     reason: null,
@@ -235,15 +143,6 @@ export function isolationFinding(watch: IsolationWatch): IsolationFinding {
   });
 }
 
-/** Median current before the start; null where nothing was reported. */
-function before(samples: readonly CurrentSample[], watch: IsolationWatch): number | null {
-  const fromS = watch.startedAtS - BEFORE_INTERVALS * watch.reportIntervalS;
-  const values = samples.flatMap((s) =>
-    s.current !== null && s.atS >= fromS && s.atS <= watch.startedAtS ? [s.current] : [],
-  );
-  return values.length === 0 ? null : median(values);
-}
-
 function trace(unit: WatchedUnit, watch: IsolationWatch): Traced {
   const told = unit.samples
     .flatMap((s) => (s.current === null || s.atS > watch.nowS ? [] : [{ atS: s.atS, current: s.current }]))
@@ -252,7 +151,7 @@ function trace(unit: WatchedUnit, watch: IsolationWatch): Traced {
   const earlier = told.filter((s) => s.atS <= watch.startedAtS);
   return {
     unit,
-    before: before(unit.samples, watch),
+    before: currentBefore(unit.samples, watch),
     since,
     lastBeforeS: earlier.at(-1)?.atS ?? watch.startedAtS,
   };
@@ -337,78 +236,4 @@ function zeroRun(t: Traced, shareOf: (atS: number) => number | null): ZeroRun | 
     i = Math.max(i, j);
   }
   return null;
-}
-
-type InputBefore = { input: WatchedInput; before: number | null };
-
-/** What inputs carried in a span, and what each lost beyond the course that all inputs share. */
-function inputsAt(
-  inputs: readonly InputBefore[],
-  watch: IsolationWatch,
-  toS: number,
-  fromS = toS - 2 * watch.reportIntervalS,
-): InputResult[] {
-  const during = inputs.map(({ input, before: was }) => {
-    const values = input.samples.flatMap((s) =>
-      s.current !== null && s.atS >= fromS && s.atS <= toS && s.atS > watch.startedAtS ? [s.current] : [],
-    );
-    return { was, now: values.length === 0 ? null : median(values) };
-  });
-  return inputs.map(({ input, before: was }, k) => {
-    const { now } = during[k]!;
-    const others = during.flatMap((d, i) =>
-      i !== k && d.was !== null && d.was >= BEFORE_MIN_A && d.now !== null ? [d.now / d.was] : [],
-    );
-    const share = others.length === 0 ? null : median(others);
-    return {
-      name: input.name,
-      strings: [...input.strings],
-      before: was,
-      during: now,
-      lost:
-        was === null ||
-        was < BEFORE_MIN_A ||
-        now === null ||
-        share === null ||
-        share * was < CLEAR_OF_ZERO * ZERO_A
-          ? null
-          : Math.min(1, Math.max(0, 1 - now / (was * share))),
-    };
-  });
-}
-
-/** For strings whose units report nothing: only the sum at an input tells, and not which unit. */
-function byInputOnly(
-  watch: IsolationWatch,
-  own: InputBefore | undefined,
-  inputs: readonly InputBefore[],
-  result: (outcome: IsolationOutcome, more?: Partial<IsolationFinding>) => IsolationFinding,
-): IsolationFinding {
-  if (own?.before == null) return result('cant_tell', { reason: 'no_reports' });
-  if (own.before < BEFORE_MIN_A) return result('cant_tell', { reason: 'no_current_before' });
-  const times = [...new Set(inputs.flatMap((i) => i.input.samples.map((s) => s.atS)))].filter(
-    (t) => t > watch.startedAtS && t <= watch.nowS,
-  );
-  times.sort((a, b) => a - b);
-  // an input that lost what one string gives it, beyond what all inputs lost
-  const fallenAt = (t: number): InputResult[] =>
-    inputsAt(inputs, watch, t, t - watch.reportIntervalS / 2).filter(
-      (i) => i.lost !== null && i.lost * i.strings.length >= INPUT_SHARE,
-    );
-  const key = (list: readonly InputResult[]): string => list.map((i) => i.name).join();
-  for (let k = 0; k + 1 < times.length; k++) {
-    const fell = fallenAt(times[k]!);
-    if (fell.length === 0 || key(fell) !== key(fallenAt(times[k + 1]!))) continue;
-    let last = k + 1;
-    while (last + 1 < times.length && key(fallenAt(times[last + 1]!)) === key(fell)) last++;
-    const next = times[last + 1];
-    const here = fell.some((i) => i.name === own.input.name);
-    return result(!here ? 'other_string' : fell.length > 1 ? 'several_strings' : 'input_only', {
-      strings: here && fell.length === 1 ? [watch.string] : fell.flatMap((i) => i.strings),
-      dropped: { afterS: times[k - 1] ?? watch.startedAtS, byS: times[k]! },
-      returned: next === undefined ? null : { afterS: times[last]!, byS: next },
-      inputs: inputsAt(inputs, watch, times[last]!, times[k]!),
-    });
-  }
-  return result('watching');
 }
