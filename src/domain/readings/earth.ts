@@ -18,7 +18,7 @@ const PRIOR = 0.01;
 /** Of the string's voltage, what leakage and stray charge show to earth on a sound string: standard deviation. */
 const SOUND_SPREAD = 0.12;
 /** Beyond three standard deviations of that a string is not said to float. */
-const FLOATS_WITHIN = 3 * SOUND_SPREAD;
+export const FLOATS_WITHIN = 3 * SOUND_SPREAD;
 /** Spread of a module's voltage against its neighbours', relative. */
 const MISMATCH = 0.01;
 
@@ -28,7 +28,10 @@ const MISMATCH = 0.01;
  * like voltages on all modules: where some units pass and some don't, the place can't be told.
  * Null when nothing was measured to earth or the string itself shows too little.
  */
-export function earthFinding(question: ReadingQuestion, alike: boolean): EarthFinding | null {
+export function earthFinding(
+  question: Pick<ReadingQuestion, 'earth' | 'units' | 'voltageV' | 'meter'>,
+  alike: boolean,
+): EarthFinding | null {
   const { earth, units: n, voltageV, meter } = question;
   if (earth === null || (earth.positiveV === null && earth.negativeV === null)) return null;
   const u = Math.abs(voltageV);
