@@ -1,6 +1,7 @@
 import { conductDay } from './diagnosis/conduct-scenarios';
 import { newConductScore, runConductDay } from './diagnosis/conduct';
 import { newCurrentScore, scoreMembership, scoreResistance } from './diagnosis/current-scores';
+import { SEED_SETS } from './diagnosis/plants';
 import { outputRun, RUN_DAYS } from './diagnosis/output-scenarios';
 import { newOutputScore, scoreLowOutput, scoreWeakUnits } from './diagnosis/output-scores';
 import { reportsOf } from './diagnosis/output-series';
@@ -33,6 +34,10 @@ const flag = process.argv.indexOf('--days');
 const days = flag < 0 ? 360 : Number(process.argv[flag + 1]);
 if (!Number.isInteger(days) || days < 1)
   throw new Error('--days takes a whole number of plant-days, at least 1.');
+const setFlag = process.argv.indexOf('--seeds');
+const seeds = setFlag < 0 ? 'held_out' : process.argv[setFlag + 1];
+if (seeds !== 'developed' && seeds !== 'held_out') throw new Error('--seeds takes developed or held_out.');
+const first = SEED_SETS[seeds];
 const verbose = process.argv.includes('--verbose');
 const say = (line: string): void => void process.stdout.write(`${line}\n`);
 const progress = (line: string): void => void process.stderr.write(`${line}\n`);
@@ -54,7 +59,7 @@ const conductDays = Math.max(1, Math.round(days / 3));
 const conduct = newConductScore();
 for (let n = 0; n < conductDays; n++) {
   if (n % 12 === 0) progress(`conduct: day ${n + 1} of ${conductDays}`);
-  runConductDay(conductDay(n), n, conduct);
+  runConductDay(conductDay(first + n), first + n, conduct);
 }
 say(`diagnosis.conduct.plant_days ${conductDays} days`);
 for (const [name, t, inThree, reports] of [
@@ -101,12 +106,13 @@ const output = newOutputScore();
 const current = newCurrentScore();
 for (let n = 0; n < runs; n++) {
   progress(`output: run ${n + 1} of ${runs}`);
-  const run = outputRun(n);
-  const reports = reportsOf(run, n);
-  scoreLowOutput(run, reports, output, n);
-  scoreWeakUnits(run, reports, output, n);
-  scoreMembership(run, reports, current, n);
-  scoreResistance(run, reports, current, n);
+  const k = first + n;
+  const run = outputRun(k);
+  const reports = reportsOf(run, k);
+  scoreLowOutput(run, reports, output, k);
+  scoreWeakUnits(run, reports, output, k);
+  scoreMembership(run, reports, current, k);
+  scoreResistance(run, reports, current, k);
 }
 say(`diagnosis.output.plant_days ${runs * RUN_DAYS} days`);
 tally('low_output', output.lowOutput, 'string_days');

@@ -27,6 +27,8 @@ export interface Expected {
   /** Relative standard deviation of a whole string of such modules. */
   relativeSd: number;
   from: ExpectedFrom;
+  /** Strings that it was learned from; 0: it comes from elsewhere. */
+  strings: number;
 }
 
 /** Fewer siblings than this have no spread worth computing. */
@@ -56,18 +58,19 @@ export function expectedModule(input: ExpectedInput): Expected | null {
       otherStrings.length >= SIBLINGS_FOR_SPREAD
         ? Math.max(SD.floor, sigmaMad(otherStrings) / ofOthers)
         : SD.fewSiblings;
-    return { voltage: ofOthers, relativeSd, from: 'other_strings' };
+    return { voltage: ofOthers, relativeSd, from: 'other_strings', strings: otherStrings.length };
   }
   const ofOwn = ownUnits.length >= OWN_UNITS_MIN ? median(ownUnits) : 0;
-  if (ofOwn > 0) return { voltage: ofOwn, relativeSd: SD.ownUnits, from: 'own_units' };
+  if (ofOwn > 0) return { voltage: ofOwn, relativeSd: SD.ownUnits, from: 'own_units', strings: 0 };
   const measured = input.poaMeasured;
   if (measured !== null && measured >= POA_MIN)
-    return { voltage: moduleVoltage(input, measured), relativeSd: SD.sensor, from: 'sensor' };
+    return { voltage: moduleVoltage(input, measured), relativeSd: SD.sensor, from: 'sensor', strings: 0 };
   if (measured === null && input.poaClear >= POA_MIN)
     return {
       voltage: moduleVoltage(input, Math.max(POA_MIN, input.poaClear * CLOUD_SHARE)),
       relativeSd: SD.clearSky,
       from: 'clear_sky',
+      strings: 0,
     };
   return null;
 }

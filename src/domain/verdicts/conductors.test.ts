@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import { UNIT_PRESETS } from '../equipment/unit-type';
-import { judgeInput, seenPassing, type InputReading } from './conductors';
+import { judgeInput, seenPassing, STEADY_S, type InputReading } from './conductors';
 import { commandedSpans, judgementTimes, type CommandPoint, type StringContext } from './context';
 import { UNCHANGED } from './evidence';
 import { judgeFrame, sweepString } from './judge';
@@ -97,25 +97,54 @@ describe('a home run that stays up', () => {
 });
 
 describe('a released string whose units tell nothing', () => {
-  it('counts the held ones from the voltage, and forgives one odd reading', () => {
+  const MINUTES = STEADY_S / 60;
+  const steady = (volts: number, minutes = MINUTES + 1) => new Array<number>(minutes).fill(volts);
+  it('counts the held ones once they have stood for two hours, and forgives one odd reading', () => {
     const context = contextOf('shutdown_only', [released], 12);
     const memory = newMemory(context);
     // 10 × 40 V, two by their bypass path at −0.5 V, under load
-    const found = feed(memory, context, NOON, [399, 480, 399, 399, 399], { currentA: 6 });
-    expect(found.slice(0, 4)).toEqual([null, null, null, null]);
-    expect(found[4]?.finding).toMatchObject({
+    const volts = [...steady(399, 20), 480, ...steady(399, MINUTES)];
+    const found = feed(memory, context, NOON, volts, { currentA: 6 });
+    expect(found.slice(0, MINUTES).every((f) => f === null)).toBe(true);
+    expect(found.find((f) => f !== null)?.finding).toMatchObject({
       kind: 'stuck_positions_unknown',
       evidence: { units: 2, ofN: 12, scope: 'string' },
     });
-    expect(feed(memory, context, NOON + 300, [480, 480], { currentA: 6 })[1]).toMatchObject({
-      finding: null,
+    const after = NOON + 60 * volts.length;
+    expect(feed(memory, context, after, [480, 480], { currentA: 6 })[1]).toMatchObject({ finding: null });
+  });
+  it('one of eighteen is told against inputs of the same inverter, and not against a datasheet', () => {
+    const context = contextOf('shutdown_only', [released], 18);
+    const volts = steady(17 * 40 - 0.5);
+    const against = (siblings: number) =>
+      feed(newMemory(context), context, NOON, volts, {
+        currentA: 6,
+        module: { expectedV: 40, relativeSd: siblings === 0 ? 0.04 : 0.012, siblings },
+      }).find((f) => f !== null)?.finding?.evidence;
+    expect(against(6)).toMatchObject({ units: 1, unitsRange: [1, 1] });
+    expect(against(2)).toMatchObject({ units: 1 });
+    expect(against(0)).toBeUndefined();
+  });
+  it('a shadow that moves on is not a held unit', () => {
+    const context = contextOf('shutdown_only', [released], 18);
+    const memory = newMemory(context);
+    const shadow = Array.from({ length: 5 }, (_, hour) => steady(40 * (17 - (hour % 2)), 60)).flat();
+    const module = { expectedV: 40, relativeSd: 0.012, siblings: 6 };
+    expect(feed(memory, context, NOON, shadow, { currentA: 6, module }).every((f) => f === null)).toBe(true);
+  });
+  it('takes a dead string in frost for a dark one', () => {
+    const frost = { ...contextOf('shutdown_only', [released], 12), snowLikely: true };
+    expect(feed(newMemory(frost), frost, NOON, steady(0, 10)).every((f) => f === null)).toBe(true);
+    const mild = contextOf('shutdown_only', [released], 12);
+    expect(feed(newMemory(mild), mild, NOON, steady(0, 10))[2]?.finding?.evidence).toMatchObject({
+      units: 12,
     });
   });
   it('says nothing of a deficit that its expectation cannot carry', () => {
     const context = contextOf('shutdown_only', [released], 12);
     const memory = newMemory(context);
     const wide = { module: { expectedV: 40, relativeSd: 0.06 }, currentA: 6 };
-    expect(feed(memory, context, NOON, [440, 440, 440, 440], wide)).toEqual([null, null, null, null]);
+    expect(feed(memory, context, NOON, steady(440), wide).every((f) => f === null)).toBe(true);
   });
   it('says nothing of one string among parallel ones, unless all are down', () => {
     const context = contextOf('shutdown_only', [released], 12);

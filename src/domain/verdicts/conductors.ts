@@ -1,6 +1,7 @@
 import { commandedAt, lightAt, type Commanded, type StringContext } from './context';
 import { UNCHANGED, type JudgeOutcome } from './evidence';
 import type { StringFinding } from './codes';
+import { SIBLINGS_FOR_SPREAD } from '../output/expected';
 import { SEEN_SHUTDOWN, type FindingEvidence, type StringMemory } from './memory';
 
 /** What the voltage of a string's input says of the string as a whole. Volts, amperes. */
@@ -16,9 +17,10 @@ export interface InputReading {
   othersPassing?: number;
   /**
    * What one passing module of this string should give now (its working voltage when current flows, voc otherwise) and
-   * the relative standard deviation of a whole string of them; null: nobody can say.
+   * the relative standard deviation of a whole string of them; null: nobody can say. `siblings`: strings on other
+   * inputs of the same inverter from which it was learned, 0 if from elsewhere.
    */
-  module: { expectedV: number; relativeSd: number } | null;
+  module: { expectedV: number; relativeSd: number; siblings?: number } | null;
 }
 
 /** NEC 690.12(B)(1): conductors outside the array boundary after initiation. */
@@ -34,10 +36,24 @@ export const AGREEING_TO_END = 2;
 const TOGETHER_INTERVALS = 1.5;
 /** Relative uncertainty of an inverter's own input measurement; from experience. */
 export const INPUT_ACCURACY = 0.02;
+/**
+ * Relative standard deviation between two inputs of one inverter, volts a module: meters, modules and warmth. From
+ * experience; the spread of five or more such inputs takes its place where it is wider.
+ */
+export const INPUTS_DIFFER = 0.012;
+/**
+ * A string of silent units that misses some modules' voltage, not all: shade moves on and held units stay, so the same
+ * count must stand this long, seconds. From experience.
+ */
+export const STEADY_S = 7200;
+/** For what stands that long so many standard deviations do (Shewhart 1931). */
+export const STEADY_DEVIATIONS = 3;
+/** So many agreeing readings one that disagrees undoes: a cloud's edge, an inverter that starts anew. */
+const UNDONE_BY_ONE = 3;
 /** A deficit or excess must be so many standard deviations (as for the modified z-score: Iglewicz & Hoaglin 1993). */
 export const DEVIATIONS = 3.5;
 
-type Suspicion = { kind: StringFinding; evidence: FindingEvidence };
+type Suspicion = { kind: StringFinding; evidence: FindingEvidence; steadyForS?: number };
 
 /**
  * Judges one input reading against what the string's units claim and what is commanded, and updates `memory` in
@@ -164,29 +180,32 @@ function countHeld(
 ): Suspicion | null | 'undecided' {
   if (input.module === null) return 'undecided';
   const units = unitCount(context);
-  const { expectedV: per, relativeSd } = input.module;
+  const { expectedV: per } = input.module;
   const { shutdownVoltage, bypassVoltage } = context.behaviour;
   const underLoad = (input.currentA ?? 0) > 0.2;
   const heldV = underLoad ? bypassVoltage : shutdownVoltage.nominal;
   const full = units * per;
-  const sd = Math.hypot(relativeSd, INPUT_ACCURACY) * full;
+  const sd = relativeSdOf(input.module) * full;
   const deficit = full - voltageV;
-  const thresholdV = Math.max(0.6 * per, DEVIATIONS * sd);
+  const thresholdV = Math.max(0.6 * per, STEADY_DEVIATIONS * sd);
   if (deficit <= thresholdV) return null;
   const alone = input.strings === 1;
   const allHeld = voltageV <= Math.max(2 * units * shutdownVoltage.max, 0.1 * full);
+  // under snow nothing powers the units, and the string is dark like any other
+  if (allHeld && context.snowLikely) return 'undecided';
   // in parallel under load the others hold the voltage up: a little missing says nothing of how many are held
   if (!alone && !allHeld) return 'undecided';
   const count = (d: number): number => Math.min(units, Math.max(0, Math.round(d / (per - heldV))));
   const range: [number, number] = [Math.max(1, count(deficit - 2 * sd)), count(deficit + 2 * sd)];
   return {
     kind: 'stuck_positions_unknown',
+    steadyForS: allHeld ? 0 : STEADY_S,
     evidence: {
       scope: alone ? 'string' : 'input',
       measuredV: voltageV,
       expectedV: full,
       thresholdV: full - thresholdV,
-      thresholdSource: 'six tenths of a module or 3.5 standard deviations of the expected voltage',
+      thresholdSource: `six tenths of a module or ${STEADY_DEVIATIONS} standard deviations of the expected voltage`,
       units: allHeld ? units : Math.max(1, count(deficit)),
       unitsRange: allHeld ? [range[0], units] : range,
       ofN: units,
@@ -201,6 +220,13 @@ function countHeld(
           ],
     },
   };
+}
+
+/** Of a string's voltage about what is expected of it, both measured by inputs. */
+function relativeSdOf({ relativeSd, siblings = 0 }: NonNullable<InputReading['module']>): number {
+  if (siblings === 0) return Math.hypot(relativeSd, INPUT_ACCURACY);
+  const unlike = INPUTS_DIFFER * Math.sqrt(1 + 1 / siblings);
+  return siblings >= SIBLINGS_FOR_SPREAD ? Math.max(relativeSd, unlike) : unlike;
 }
 
 /**
@@ -221,8 +247,8 @@ function settle(memory: StringMemory, suspicion: Suspicion | null, atS: number):
   const standing = memory.finding;
   if (suspicion === null) {
     if (standing === null) {
-      memory.pending = '';
-      memory.pendingCount = 0;
+      memory.pendingCount = Math.max(0, memory.pendingCount - UNDONE_BY_ONE);
+      if (memory.pendingCount === 0) memory.pending = '';
       return UNCHANGED;
     }
     memory.pendingCount = memory.pending === '' ? memory.pendingCount + 1 : 1;
@@ -243,9 +269,18 @@ function settle(memory: StringMemory, suspicion: Suspicion | null, atS: number):
     memory.finding = { kind, sinceS: standing.sinceS, evidence };
     return { changes: [], finding: { atS, finding: memory.finding, before: kind } };
   }
-  memory.pendingCount = memory.pending === kind ? memory.pendingCount + 1 : 1;
+  const { steadyForS = 0 } = suspicion;
+  const agrees = memory.pending === kind && (steadyForS === 0 || memory.pendingUnits === evidence.units);
+  if (!agrees && memory.pending === kind && memory.pendingCount > UNDONE_BY_ONE) {
+    memory.pendingCount -= UNDONE_BY_ONE;
+    return UNCHANGED;
+  }
+  if (!agrees) memory.pendingSinceS = atS;
+  memory.pendingCount = agrees ? memory.pendingCount + 1 : 1;
   memory.pending = kind;
+  memory.pendingUnits = evidence.units;
   if (memory.pendingCount < AGREEING[kind]) return UNCHANGED;
+  if (steadyForS > 0 && atS - (memory.pendingSinceS ?? atS) < steadyForS) return UNCHANGED;
   memory.finding = { kind, sinceS: atS, evidence };
   memory.pendingCount = 0;
   return { changes: [], finding: { atS, finding: memory.finding, before: standing?.kind ?? null } };

@@ -72,6 +72,9 @@ export interface StringMemory {
   /** A finding on its way in (or, '' while one stands, on its way out), and how many readings agree. */
   pending: StringFinding | '';
   pendingCount: number;
+  /** Since when the readings agree, and on how many units; not kept by earlier versions. */
+  pendingSinceS?: number;
+  pendingUnits?: number | null;
 }
 
 const zeros = (n: number): number[] => new Array<number>(n).fill(0);

@@ -2,9 +2,8 @@ import { describe, expect, it } from 'vitest';
 import type { HeardItem } from '../../schemas/live';
 import type { CommandNow, SlotNow, StringNow } from '../../schemas/api/now';
 import type { RollCallPage, RollCallRun } from '../../schemas/api/roll-call';
-import type { SiteUnderWay } from '../../schemas/api/commissioning';
 import { curveOf, tallyOf } from './tally';
-import { commandInForceWords, nearWords, rollCallHeading, rollCallWords, underWayHeading } from './words';
+import { commandInForceWords, nearWords, rollCallHeading, rollCallWords } from './words';
 
 const ID = '00000000-0000-4000-8000-00000000000';
 const slot = (position: number, serial: string | null, signal: number | null = null): SlotNow => ({
@@ -49,6 +48,7 @@ const stringOf = (name: string, slots: SlotNow[], kind: StringNow['kind'] = 'mon
   expectedBand: null,
   expectedInShutdown: null,
   expectedFrom: '',
+  expectedStrings: 0,
   command: null,
   dark: false,
   input: { inverter: 'inverter 1', number: 1, voltage: null, current: null, strings: 1 },
@@ -239,45 +239,5 @@ describe('what a unit begins to follow', () => {
     expect(words).toContain('north roof: shutdown');
     expect(words).toContain('goes into shutdown');
     expect(words).not.toContain('south roof');
-  });
-});
-
-describe('the heading of the list', () => {
-  const site = (more: Partial<SiteUnderWay> = {}): SiteUnderWay => ({
-    id: `${ID}1`,
-    name: 'Old Tannery Market Hall',
-    place: '',
-    timeZone: 'UTC',
-    stage: 'commissioning',
-    strings: 13,
-    slots: 184,
-    placed: 184,
-    roster: 184,
-    heard: 161,
-    heardUnknown: 0,
-    rollCall: null,
-    checks: { strings: 0, failed: 0 },
-    readings: { strings: 0, lastAt: null },
-    lastTest: null,
-    ...more,
-  });
-  const running = {
-    startedAt: '2026-12-01T10:00:00.000Z',
-    stoppedAt: null,
-    personOnSite: 'P',
-    startedBy: 'O',
-  };
-  it.each<[SiteUnderWay[], string]>([
-    [[], 'No site is being commissioned'],
-    [[site()], 'One site is being commissioned'],
-    [[site(), site()], '2 sites are being commissioned'],
-    [
-      [site({ rollCall: running }), site()],
-      'The roll call is running at Old Tannery Market Hall: 161 of 184 heard',
-    ],
-    [[site({ rollCall: running }), site({ rollCall: running })], 'Roll calls are running at 2 sites'],
-    [[site({ rollCall: { ...running, stoppedAt: running.startedAt } })], 'One site is being commissioned'],
-  ])('%#', (sites, words) => {
-    expect(underWayHeading(sites).replace(/\u00a0/g, ' ')).toBe(words);
   });
 });

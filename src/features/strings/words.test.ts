@@ -55,6 +55,7 @@ function string(change: Record<number, Partial<SlotNow>> = {}, more: Partial<Str
     expectedBand: [535, 557],
     expectedInShutdown: null,
     expectedFrom: 'the other strings on the south roof',
+    expectedStrings: 0,
     command: null,
     dark: false,
     input: { inverter: 'Inverter 2', number: 3, voltage, current: 8, strings: 1 },

@@ -75,6 +75,8 @@ export const stringNow = z.object({
   /** V open circuit with every unit in shutdown, by the type entered, while shutdown is in force; else null. */
   expectedInShutdown: z.number().nullable(),
   expectedFrom: z.string(), // in words: "other strings on the south roof", "clear-sky model"
+  /** How many other strings the expectation rests on; 0: it comes from elsewhere. */
+  expectedStrings: z.int(),
   command: commandNow.nullable(),
   dark: z.boolean(), // too little light to power the units
   input: z.object({

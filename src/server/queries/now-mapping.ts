@@ -239,6 +239,7 @@ function mapped(own: Measured, around: Around): StringNow {
     expectedBand: expected ? expectedBand(expected, units.length) : null,
     expectedInShutdown: inForce ? units.length * row.shutdownVoltage : null,
     expectedFrom: expected ? FROM_WORDS[expected.from](planeWords(plane?.name ?? 'same plane')) : '',
+    expectedStrings: expected?.strings ?? 0,
     command,
     dark,
     input: {

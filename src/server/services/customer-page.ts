@@ -97,7 +97,7 @@ function daylightMinutes(roof: RoofRow, first: string, last: string): number {
   const days = Math.round((Date.parse(`${last}T12:00:00Z`) - from) / DAY_MS) + 1;
   let minutes = 0;
   for (let i = 0; i < days; i += DAYLIGHT_STEP_DAYS) {
-    const { sunrise, sunset, sunUp } = sunRiseSet(from + i * DAY_MS, roof);
+    const { sunrise, sunset, sunUp } = sunRiseSet(from + i * DAY_MS, roof, { beyondDay: 'actual' });
     const day =
       sunrise !== null && sunset !== null ? (sunset - sunrise) / 60_000 : sunUp === 'all_day' ? 1440 : 0;
     minutes += day * Math.min(DAYLIGHT_STEP_DAYS, days - i);

@@ -29,6 +29,10 @@ export interface ConductDay {
   /** Initiators opened and closed, epoch seconds. */
   openings: { initiator: string; fromS: number; toS: number }[];
   toExplain: ToExplain[];
+  /** Snow lies on the modules for some hours: nobody is to blame for silence then. */
+  snow: boolean;
+  /** Nothing of the site comes through for a while; `keeps`: the logger hands it over afterwards. */
+  cutOff: { fromS: number; toS: number; keeps: boolean } | null;
 }
 
 export const SCENARIOS = [
@@ -44,6 +48,10 @@ export const SCENARIOS = [
   'stuck',
   'keeps_passing',
   'sound',
+  'stuck_unseen',
+  'keeps_passing_unseen',
+  'snow',
+  'stuck_unseen',
 ] as const;
 
 const ALL_TYPES = [BOTH_SIDES, OUTPUT_SIDE, HOLDING, ON_KEEP_ALIVE, OPTIMIZING, SHUTDOWN_ONLY];
@@ -55,6 +63,9 @@ const TYPES: Partial<Record<(typeof SCENARIOS)[number], string[]>> = {
   stuck_and_gateway: BY_LOGGER,
   mute: BY_LOGGER,
   stuck_at_release: [BOTH_SIDES, OUTPUT_SIDE, ON_KEEP_ALIVE, OPTIMIZING],
+  stuck_unseen: [SHUTDOWN_ONLY],
+  keeps_passing_unseen: [SHUTDOWN_ONLY],
+  snow: [BOTH_SIDES, OUTPUT_SIDE, SHUTDOWN_ONLY, OPTIMIZING],
 };
 /** Strings of a site and how often such a size comes: 12 to 600 units. */
 const SIZES = [1, 2, 2, 4, 4, 6, 6, 8, 8, 10, 14, 20, 32];
@@ -68,8 +79,7 @@ export function conductDay(n: number): ConductDay {
   );
   const strings = Math.max(manyParts ? 4 : 1, draw.oneOf(SIZES));
   const unitType = draw.oneOf(TYPES[scenario] ?? ALL_TYPES);
-  // the simulated tracker knows one string of optimizing units an input
-  const sharesInputs = draw.next() < 0.3 && strings > 1 && unitType !== OPTIMIZING;
+  const sharesInputs = draw.next() < 0.3 && strings > 1;
   const drawn = drawPlant(
     {
       n,
@@ -82,6 +92,7 @@ export function conductDay(n: number): ConductDay {
       gateways: manyParts ? 3 : 1 + Math.floor(strings / 6),
       obstacle: draw.next() < 0.3,
       days: 1,
+      frost: scenario === 'snow',
     },
     draw,
   );
@@ -134,13 +145,15 @@ export function conductDay(n: number): ConductDay {
     });
   };
 
-  if (scenario === 'stuck') stuckSingles();
+  if (scenario === 'stuck' || scenario === 'stuck_unseen') stuckSingles();
   else if (scenario === 'stuck_at_release')
     for (const p of draw.some(places, draw.whole(1, 3))) {
       add({ kind: 'stuck', ...p, at: 'next_release' }, openS + 60);
       explainUnit('stuck', p, openings[0]!.toS + Math.max(900, 6 * interval));
     }
-  else if (scenario === 'keeps_passing')
+  else if (scenario === 'snow')
+    faults.push({ fault: { kind: 'snow' }, fromS: at(1), toS: at(11 + 3 * draw.next()) });
+  else if (scenario === 'keeps_passing' || scenario === 'keeps_passing_unseen')
     for (const p of draw.some(places, draw.whole(1, 3))) {
       add({ kind: 'not_shutting_down', ...p, claims: draw.oneOf(['passing', 'shutdown']) }, at(1));
       explainUnit('not_shutting_down', p, lastOpenS);
@@ -191,5 +204,20 @@ export function conductDay(n: number): ConductDay {
       askedS: lastOpenS,
     });
   }
-  return { drawn, faults, openings, toExplain };
+  const cutOff = cutOffOf(draw, at, openings);
+  return { drawn, faults, openings, toExplain, snow: scenario === 'snow', cutOff };
+}
+
+/** On one day in four the logger is cut off for twenty minutes to three hours, but for the time of a command. */
+function cutOffOf(
+  draw: Draw,
+  at: (hour: number) => number,
+  openings: ConductDay['openings'],
+): ConductDay['cutOff'] {
+  const happens = draw.next() < 0.25;
+  const keeps = draw.next() < 0.6;
+  const fromS = at(7.5 + 8 * draw.next());
+  const toS = fromS + (keeps ? draw.whole(1200, 10_800) : 1200);
+  const clear = openings.every((o) => o.toS + 300 < fromS || o.fromS > toS + 300);
+  return happens && clear ? { fromS, toS, keeps } : null;
 }

@@ -9,6 +9,8 @@ export const NOT_MEASURED_BELOW = 0.5;
 const RELEASE_TAKES_S = 30;
 const TIME_LIMIT_S = 30;
 
+/** Degrees that the sun climbs in the minute by which a logger's clock may be late: nobody is stuck before that. */
+const CLOCK_MARGIN = 0.25;
 /** Degrees by which a logger's clock that is off may move dawn. */
 const DAWN_MARGIN = 1;
 
@@ -42,7 +44,7 @@ export function stringTruth(
   const shut = openSinceS !== undefined && plant.atS > openSinceS + TIME_LIMIT_S;
   const modes = [...s.mode];
   return {
-    stuck: modes.map((m) => released && elevation >= DIM_BELOW_ELEVATION && m === SHUTDOWN),
+    stuck: modes.map((m) => released && elevation >= DIM_BELOW_ELEVATION + CLOCK_MARGIN && m === SHUTDOWN),
     nearlyStuck: modes.map(
       (m) => released && elevation >= DIM_BELOW_ELEVATION - DAWN_MARGIN && m === SHUTDOWN,
     ),

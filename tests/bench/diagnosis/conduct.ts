@@ -12,6 +12,8 @@ export interface ConductScore {
   notShuttingDown: Tally;
   /** Strings whose units report nothing: a whole string at a time, positions unknown. */
   stuckStrings: Tally;
+  /** Of the strings of silent units that hold some, those that share an input: there no voltage tells. */
+  stuckStringsUndecided: Share;
   notShuttingDownStrings: Tally;
   /** Faults explained rightly, among those whose verdict was given. */
   cause: Share;
@@ -29,6 +31,7 @@ export const newConductScore = (): ConductScore => ({
   stuck: new Tally(),
   notShuttingDown: new Tally(),
   stuckStrings: new Tally(),
+  stuckStringsUndecided: new Share(),
   notShuttingDownStrings: new Tally(),
   cause: new Share(),
   stuckReports: [],
@@ -54,6 +57,10 @@ class Course {
   falseS = NaN;
   mostReports = 0;
   private nearly = false;
+
+  get now(): boolean {
+    return !Number.isNaN(this.sinceS);
+  }
 
   so(is: boolean, heard: boolean, atS: number, nearly = false): void {
     this.nearly = nearly;
@@ -102,13 +109,9 @@ export function runConductDay(day: ConductDay, n: number, score: ConductScore): 
   const startS = fromS + 3 * 3600;
   const plant = build(drawn, day.faults, startS);
   plant.step(startS);
-  const gapS = fromS + Math.round((8 + 8 * draw.next()) * 3600);
   const watch = new Watch(plant, draw, {
     lost: draw.oneOf([0, 0.005, 0.02]),
-    gap:
-      n % 4 === 3 && day.openings.every((o) => o.toS < gapS || o.fromS > gapS + 1500)
-        ? [gapS, gapS + 1200]
-        : null,
+    cutOff: day.cutOff,
     skewS: draw.oneOf([0, 0, -40, 25, 90]),
     inverterLagS: draw.whole(0, 8),
   });
@@ -135,9 +138,15 @@ export function runConductDay(day: ConductDay, n: number, score: ConductScore): 
       if (tellsNothing) {
         if (finding.kind === 'stuck_positions_unknown') c.stuck[0]!.said(plant.atS);
         if (finding.kind === 'not_shutting_down') c.keeps[0]!.said(plant.atS);
-      } else if (finding.kind === 'not_shutting_down') c.keeps[0]!.said(plant.atS);
+      } else if (finding.kind === 'not_shutting_down') {
+        // position unknown: right while any unit of the string or, where it shares, of the input does
+        const its = onInput(string).flatMap((k) => courses[k]!.keeps);
+        (c.keeps.find((x) => x.now) ?? its.find((x) => x.now) ?? c.keeps[0]!).said(plant.atS);
+      }
     }
   };
+  const onInput = ({ plan: { inverter, input } }: Watched): number[] =>
+    watch.strings.flatMap((s, k) => (s.plan.inverter === inverter && s.plan.input === input ? [k] : []));
   /** What is true now, for the courses. */
   const look = (regular: boolean): void => {
     watch.strings.forEach((s, k) => {
@@ -152,14 +161,14 @@ export function runConductDay(day: ConductDay, n: number, score: ConductScore): 
         return;
       }
       c.stuck[0]!.so(truth.stuck.some(Boolean), regular, plant.atS, truth.nearlyStuck.some(Boolean));
-      c.keeps[0]!.so(keepsOnInput(s, watch.strings), regular, plant.atS);
+      c.keeps[0]!.so(keepsOnInput(s), regular, plant.atS);
     });
   };
   /** A voltage on a shared input stands for any of its strings: each may be the one. */
-  const keepsOnInput = (s: Watched, all: readonly Watched[]): boolean =>
-    all.some((o) => {
-      if (o.plan.inverter !== s.plan.inverter || o.plan.input !== s.plan.input) return false;
-      const truth = stringTruth(plant, o.plan, openSince.get(o.plan.zone), releasedSince.get(o.plan.zone));
+  const keepsOnInput = (s: Watched): boolean =>
+    onInput(s).some((k) => {
+      const { plan: o } = watch.strings[k]!;
+      const truth = stringTruth(plant, o, openSince.get(o.zone), releasedSince.get(o.zone));
       return truth.keeps.some(Boolean);
     });
   const close = (): void => {
@@ -214,6 +223,11 @@ export function runConductDay(day: ConductDay, n: number, score: ConductScore): 
     const stuckTally = tellsNothing ? score.stuckStrings : score.stuck;
     const keepsTally = tellsNothing ? score.notShuttingDownStrings : score.notShuttingDown;
     c.stuck.forEach((x, i) => {
+      if (tellsNothing && x.ever) {
+        const open = onInput(watch.strings[k]!).length > 1 && Number.isNaN(x.saidS);
+        score.stuckStringsUndecided.count(open);
+        if (open) return;
+      }
       x.score(stuckTally, tellsNothing ? null : score.stuckInThree, tellsNothing ? null : score.stuckReports);
       odd(score, x, n, 'stuck', watch.strings[k]!, i);
     });

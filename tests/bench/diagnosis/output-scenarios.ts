@@ -26,6 +26,7 @@ export interface OutputRun {
   swaps: Extract<Fault, { kind: 'wrong_string' }>[];
   /** Share of frames lost. */
   lost: number;
+  /** Seconds by which the inverter's readings are older than the units'. */
   inverterLagS: number;
 }
 
@@ -72,9 +73,9 @@ export function outputRun(n: number): OutputRun {
   const swaps: OutputRun['swaps'] = [];
   const put = (fault: OutputFault): void => void faults.push({ fault, fromS: onsetS, toS: null });
   if (!sound) {
-    const count = Math.max(1, Math.floor(strings / 4));
+    const count = Math.max(1, Math.floor(strings / 3.5));
     draw.some(plan.strings, count).forEach((s, k) => {
-      const kind = KINDS[(n + k) % KINDS.length]!;
+      const kind = KINDS[(3 * n + k) % KINDS.length]!;
       const position = draw.whole(1, s.slots.length);
       const fault: OutputFault =
         kind === 'soiling'
@@ -89,7 +90,7 @@ export function outputRun(n: number): OutputRun {
       ofString.set(s.name, fault);
       put(fault);
       // two units of one string: enough to be called low
-      if (fault.kind === 'stuck' && draw.next() < 0.6)
+      if (fault.kind === 'stuck' && draw.next() < 0.7)
         put({ ...fault, position: (fault.position % s.slots.length) + 1 });
     });
     const free = plan.strings.filter((s) => !ofString.has(s.name));
@@ -114,7 +115,7 @@ export function outputRun(n: number): OutputRun {
     ofString,
     swaps,
     lost: draw.oneOf([0, 0.01, 0.03]),
-    inverterLagS: 0,
+    inverterLagS: draw.oneOf([0, 5, 10, 20]),
   };
 }
 

@@ -76,6 +76,12 @@ export function reportsOf(run: OutputRun, n: number): Reports {
   twin.step(fromS);
   for (let q = 1; q < steps; q++) {
     const atS = fromS + q * STEP_S;
+    const { inverterLagS } = run;
+    if (inverterLagS > 0) plant.step(atS - inverterLagS);
+    const inputs =
+      inverterLagS === 0 || plant.now.elevation < 0
+        ? []
+        : inputRows(plant, run.drawn.plan.loggers[0]!.serial);
     plant.step(atS);
     twin.step(atS);
     if (plant.now.elevation < 0) continue;
@@ -86,7 +92,7 @@ export function reportsOf(run: OutputRun, n: number): Reports {
     compare(plant, twin, reports, day);
     // an hour in which the logger says nothing
     if (q >= gapStep && q < gapStep + 12) continue;
-    note(plant, run, draw, reports, q);
+    note(plant, run, draw, reports, q, inverterLagS > 0 ? inputs : null);
   }
   return reports;
 }
@@ -105,13 +111,20 @@ function compare(plant: SitePlant, twin: SitePlant, reports: Reports, day: numbe
   });
 }
 
-function note(plant: SitePlant, run: OutputRun, draw: Draw, reports: Reports, q: number): void {
+function note(
+  plant: SitePlant,
+  run: OutputRun,
+  draw: Draw,
+  reports: Reports,
+  q: number,
+  lagging: ReturnType<typeof inputRows> | null,
+): void {
   const logger = plant.plan.loggers[0]!.serial;
   const radio = radioOf(plant, logger);
   const weather = weatherRows(plant, logger)[0];
   if (weather?.irradiance != null) reports.poaGlobal[q] = weather.irradiance;
   if (weather?.temperatureModule != null) reports.temperatureCell[q] = weather.temperatureModule / 10 + 1.5;
-  const inputs = inputRows(plant, logger);
+  const inputs = lagging ?? inputRows(plant, logger);
   const inverters = new Map(inverterRows(plant, logger).map((r) => [r.inverter, r]));
   plant.plan.strings.forEach((s, k) => {
     const out = reports.strings[k]!;

@@ -62,7 +62,12 @@ export interface PlantSpec {
   obstacle: boolean;
   /** So many days of the plant are looked at. */
   days: number;
+  /** Midwinter where it freezes. */
+  frost?: boolean;
 }
+
+/** First number of each set of plants: the judgements were developed on one and are held against the other. */
+export const SEED_SETS = { developed: 0, held_out: 50_400 } as const;
 
 export interface DrawnPlant {
   plan: SitePlan;
@@ -73,7 +78,7 @@ export interface DrawnPlant {
 
 /** Draws a site on paper; `draw` decides where, when, under what sky and of which modules. */
 export function drawPlant(spec: PlantSpec, draw: Draw): DrawnPlant {
-  const latitude = draw.oneOf(LATITUDES) + 2 * draw.next();
+  const latitude = spec.frost ? draw.whole(40, 46) : draw.oneOf(LATITUDES) + 2 * draw.next();
   const place = draw.oneOf(
     PLACES.filter((p) => Math.abs(Math.abs(p.latitude) - Math.abs(latitude)) < 16).length > 0
       ? PLACES.filter((p) => Math.abs(Math.abs(p.latitude) - Math.abs(latitude)) < 16)
@@ -132,7 +137,11 @@ export function drawPlant(spec: PlantSpec, draw: Draw): DrawnPlant {
     { modules: MODULE_TYPES, units: UNIT_TYPES },
   );
   // so far north that a midwinter day is no day to judge by: March to October there
-  const day = Math.abs(latitude) > 48 ? midyear(draw, latitude) : draw.whole(0, 364 - spec.days);
+  const day = spec.frost
+    ? draw.oneOf([draw.whole(0, 45), draw.whole(340, 360)])
+    : Math.abs(latitude) > 48
+      ? midyear(draw, latitude)
+      : draw.whole(0, 364 - spec.days);
   const fromS = FIRST_DAY_S + day * DAY_S - Math.round(plan.longitude * 240);
   return { plan, fromS, seed: mix(SEED, spec.n) };
 }

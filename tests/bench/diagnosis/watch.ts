@@ -3,11 +3,12 @@ import { clearSkyInPlane } from '../../../src/domain/photovoltaics/irradiance/cl
 import { solarPositionQuick } from '../../../src/domain/photovoltaics/sun/position-quick';
 import type { SiteCondition } from '../../../src/domain/causes/site';
 import { UNIT_STATES, VERDICTS } from '../../../src/domain/verdicts/codes';
-import { judgeInput, seenPassing } from '../../../src/domain/verdicts/conductors';
+import { judgeInput, seenPassing, type InputReading } from '../../../src/domain/verdicts/conductors';
 import {
   commandedSpans,
   judgementTimes,
   lightSpans,
+  snowMayLie,
   timeLimitOf,
   type CommandPoint,
   type LightSpan,
@@ -20,6 +21,8 @@ import { frameOf, inputRows, radioOf, weatherRows } from '../../../simulator/log
 import type { SitePlant } from '../../../simulator/plant/site-plant';
 import type { StringPlant } from '../../../simulator/plant/string-plant';
 import type { StringPlan } from '../../../simulator/plant/plan';
+import type { Frame } from '../../../src/schemas/ingest';
+import type { ConductDay } from './conduct-scenarios';
 import { Draw, moduleTypeOf, unitTypeOf } from './plants';
 
 /** What a string's judgement holds in memory, and what was seen of its units last. */
@@ -49,6 +52,9 @@ export class Watch {
   private readonly points = new Map<string, CommandPoint[]>();
   private readonly gatewayHeard = new Map<number, number>();
   private inputsNow: ReturnType<typeof inputRows> = [];
+  /** Frames that the logger keeps while it is cut off. */
+  private kept: { string: Watched; frame: Frame; atS: number }[] = [];
+  private snow = false;
   private light: LightSpan[] = [];
 
   constructor(
@@ -57,8 +63,8 @@ export class Watch {
     readonly options: {
       /** Share of frames lost. */
       lost: number;
-      /** From and to which moments nothing of the site comes through, epoch seconds. */
-      gap: [number, number] | null;
+      /** Nothing of the site comes through meanwhile, epoch seconds; `keeps`: its frames come afterwards. */
+      cutOff: ConductDay['cutOff'];
       /** Seconds by which the logger's clock is ahead, and by which the inverters' readings lag it. */
       skewS: number;
       inverterLagS: number;
@@ -90,8 +96,8 @@ export class Watch {
   }
 
   private get cutOff(): boolean {
-    const { gap } = this.options;
-    return gap !== null && this.plant.atS >= gap[0] && this.plant.atS < gap[1];
+    const { cutOff } = this.options;
+    return cutOff !== null && this.plant.atS >= cutOff.fromS && this.plant.atS < cutOff.toS;
   }
 
   /** Takes over what is in force now; true when something is new. */
@@ -126,7 +132,7 @@ export class Watch {
       heardAtS: s.slots.map(() => this.plant.atS - 30 * 86_400),
       commands: commandedSpans(behaviour, plan.stage, this.points.get(s.zone) ?? [], transmitters),
       light: this.light,
-      snowLikely: false,
+      snowLikely: this.snow,
     };
   }
 
@@ -139,11 +145,38 @@ export class Watch {
   /** A regular report of everything, and the sweep that follows. */
   report(): void {
     for (const s of this.strings) s.heardNow.fill(0);
-    if (this.cutOff) return;
+    if (this.cutOff) {
+      if (this.options.cutOff?.keeps) this.keep();
+      return;
+    }
+    this.handOver();
+    this.air();
     this.frames(this.strings, true);
     this.inputs();
     const nowS = this.clock();
     for (const s of this.strings) this.take(s, sweepString(s.memory, s.context, nowS));
+  }
+
+  private keep(): void {
+    const radio = radioOf(this.plant, this.logger);
+    for (const string of this.strings) {
+      const frame = frameOf(this.plant, radio, string.serials);
+      if (frame !== null) this.kept.push({ string, frame, atS: this.clock() });
+    }
+  }
+
+  /** What was kept comes in, oldest first, before anything new. */
+  private handOver(): void {
+    for (const { string, frame, atS } of this.kept.splice(0)) this.judge(string, frame, atS);
+  }
+
+  /** Frost and thaw, as the server takes them from the air. */
+  private air(): void {
+    const air = weatherRows(this.plant, this.logger)[0]?.temperatureAir ?? null;
+    const snow = snowMayLie(this.snow, air === null ? null : air / 10);
+    if (snow === this.snow) return;
+    this.snow = snow;
+    for (const s of this.strings) s.context = this.contextOf(s.plan);
   }
 
   /** At once: strings of which a unit changed. */
@@ -168,10 +201,13 @@ export class Watch {
         this.gatewayHeard.set(gateway, atS);
         if (regular) s.heardNow[i] = 1;
       });
-      if (atS < s.memory.atS) continue;
-      const { state, voltageOut, voltageIn } = frame;
-      this.take(s, judgeFrame(s.memory, s.context, { atS, state, voltageOut, voltageIn }));
+      this.judge(s, frame, atS);
     }
+  }
+
+  private judge(s: Watched, { state, voltageOut, voltageIn }: Frame, atS: number): void {
+    if (atS < s.memory.atS) return;
+    this.take(s, judgeFrame(s.memory, s.context, { atS, state, voltageOut, voltageIn }));
   }
 
   private inputs(): void {
@@ -200,7 +236,7 @@ export class Watch {
   }
 
   /** What one passing module of a silent string should give: as the server works it out. */
-  private expectation(own: Watched): { expectedV: number; relativeSd: number } | null {
+  private expectation(own: Watched): InputReading['module'] {
     const { plan } = this.plant;
     const measured = (s: Watched) => {
       const row = this.inputsNow.find((r) => r.inverter === s.plan.inverter && r.input === s.plan.input);
@@ -214,21 +250,28 @@ export class Watch {
     const mine = measured(own);
     const weather = weatherRows(this.plant, this.logger)[0];
     const plane = plan.planes[0]!;
+    const otherStrings = this.strings.flatMap((s) => {
+      if (s === own || s.plan.inverter !== own.plan.inverter) return [];
+      const m = measured(s);
+      return m.underLoad === mine.underLoad && m.typical !== null ? [m.typical] : [];
+    });
     const expected = expectedModule({
       module: moduleTypeOf(plan),
       underLoad: mine.underLoad,
-      otherStrings: this.strings.flatMap((s) => {
-        if (s === own || s.plan.inverter !== own.plan.inverter) return [];
-        const m = measured(s);
-        return m.underLoad === mine.underLoad && m.typical !== null ? [m.typical] : [];
-      }),
+      otherStrings,
       ownUnits: [],
       poaMeasured: weather?.irradiance ?? null,
       poaClear: clearSkyInPlane(this.plant.atS * 1000, { ...plan, ...plane }).poaGlobal,
       temperatureCellMeasured: weather?.temperatureModule == null ? null : weather.temperatureModule / 10,
       temperatureAir: weather?.temperatureAir == null ? null : weather.temperatureAir / 10,
     });
-    return expected && { expectedV: expected.voltage, relativeSd: expected.relativeSd };
+    return (
+      expected && {
+        expectedV: expected.voltage,
+        relativeSd: expected.relativeSd,
+        siblings: expected.strings,
+      }
+    );
   }
 
   private take(string: Watched, outcome: JudgeOutcome): void {
