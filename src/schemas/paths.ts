@@ -24,6 +24,9 @@ export const paths = {
   readings: (site: string) => `/commissioning/${site}/readings`,
   /** The phone's page: works without a network. */
   capture: (site: string) => `/capture/${site}`,
+  /** The phone's page without anybody's data: what the phone keeps of it. */
+  captureShell: () => '/capture',
+  captureWorker: () => '/capture-worker.js',
   rollCall: (site: string) => `/commissioning/${site}/roll-call`,
   walk: (site: string) => `/commissioning/${site}/walk`,
   membership: (site: string) => `/commissioning/${site}/membership`,
@@ -71,6 +74,7 @@ export const paths = {
     isolation: (site: string) => `/api/sites/${site}/isolation`,
     isolationStop: (site: string) => `/api/sites/${site}/isolation/stop`,
     commissioningCsv: () => '/api/commissioning.csv',
+    commissioningSite: (site: string) => `/api/sites/${site}/commissioning`,
     equipment: (family: EquipmentFamily) => `/api/equipment/${family}`,
     equipmentCsv: (family: EquipmentFamily) => `/api/equipment/${family}.csv`,
     equipmentType: (family: EquipmentFamily, type: string) => `/api/equipment/${family}/${type}`,
@@ -92,7 +96,12 @@ export const paths = {
     /** What the phone keeps of a site, to work without a network. */
     captureSnapshot: (site: string) => `/api/sites/${site}/capture`,
     shutdownTests: (site: string) => `/api/sites/${site}/shutdown-tests`,
+    shutdownTestsCsv: (site: string) => `/api/sites/${site}/shutdown-tests.csv`,
     shutdownTest: (test: string) => `/api/shutdown-tests/${test}`,
+    /** What people do during a test, step by step. */
+    shutdownTestActs: (test: string) => `/api/shutdown-tests/${test}/acts`,
+    shutdownTestSign: (test: string) => `/api/shutdown-tests/${test}/sign`,
+    shutdownTestEnd: (test: string) => `/api/shutdown-tests/${test}/end`,
     handover: (site: string) => `/api/sites/${site}/handover`,
     acceptGap: (site: string) => `/api/sites/${site}/accepted-gaps`,
     /** A paper of a site: handover pack, test report. */
