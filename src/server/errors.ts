@@ -23,6 +23,8 @@ export interface ErrorDetail {
   fields?: FieldFault[];
   /** Seconds until another try makes sense. */
   retryAfterS?: number;
+  /** What stands instead, where somebody else was first: whoever asked can then show both. */
+  current?: unknown;
 }
 
 export class AppError extends Error {

@@ -24,6 +24,7 @@ export function problem(error: unknown, requestId: string): Response {
     status,
     detail: known?.message ?? `Try again; if it stays, report it with the number ${requestId}.`,
     fields: known?.detail.fields ?? [],
+    ...(known?.detail.current === undefined ? {} : { current: known.detail.current }),
     requestId,
   };
   const headers: Record<string, string> = {
