@@ -232,9 +232,9 @@ export function commissioningSteps(facts: CommissioningFacts): Step[] {
 }
 
 /** What still blocks the handover: gaps of the steps before it that nobody has accepted. */
-export const openGaps = (steps: readonly Step[]): Gap[] =>
+export const openGaps = (steps: readonly Pick<Step, 'key' | 'gaps'>[]): Gap[] =>
   steps.filter((s) => s.key !== 'handover').flatMap((s) => s.gaps.filter((gap) => !gap.accepted));
 
 /** The step that is worked on: the first that is not done. */
-export const currentStep = (steps: readonly Step[]): Step | undefined =>
+export const currentStep = <S extends Pick<Step, 'state'>>(steps: readonly S[]): S | undefined =>
   steps.find((s) => s.state !== 'done');

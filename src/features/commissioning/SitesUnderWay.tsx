@@ -1,129 +1,211 @@
-import type { ReactNode } from 'react';
+import { useMemo } from 'react';
+import { STATE_WORDS, StepBox, STEP_NAMES, STEP_PAGES } from '../../components/commissioning/Steps';
 import { ButtonLink } from '../../components/ui/Button';
 import { Notice } from '../../components/ui/Notice';
 import { Sheet } from '../../components/ui/Sheet';
-import { SiteTime } from '../../components/ui/Time';
-import { counted, number } from '../../drawings/numbers';
-import { longDate } from '../../drawings/times';
+import { RelativeTime } from '../../components/ui/Time';
+import { currentStep, openGaps, STEPS } from '../../domain/commissioning/steps';
+import { counted } from '../../drawings/numbers';
+import { withQuery } from '../../lib/api';
+import { useViewInUrl } from '../../lib/view-in-url';
 import { paths } from '../../schemas/paths';
-import type { SiteUnderWay } from '../../schemas/api/commissioning';
+import type { SiteSteps, UnderWayView } from '../../schemas/api/commissioning';
+import { daysInStep, listedSites, UNDER_WAY_DEFAULTS } from './under-way';
 
-const RESULTS = {
-  passed: 'passed',
-  failed: 'not passed',
-  consistent: 'readings agree, not measured by meter',
-  not_witnessed: 'not witnessed',
-} as const;
+interface Props {
+  sites: readonly SiteSteps[];
+  at: string;
+  view: UnderWayView;
+  mayCreate: boolean;
+}
 
-function Known({ name, children }: { name: string; children: ReactNode }) {
+const CONTROL = 'target rounded border border-rule bg-sheet px-2.5 text-[15px] text-ink';
+
+/** The steps of one site in a row: ticked, half, empty; each a link. */
+function StepRow({ site }: { site: SiteSteps }) {
   return (
-    <div className="border-t border-rule-faint py-2 sm:border-0 sm:py-0">
-      <dt className="text-sm text-ink-2">{name}</dt>
-      <dd>{children}</dd>
-    </div>
+    <ol className="mb-4 grid grid-cols-2 gap-x-4 gap-y-1 sm:grid-cols-3 lg:grid-cols-6">
+      {site.steps.map((step) => (
+        <li key={step.key}>
+          <a
+            href={STEP_PAGES[step.key](site.id)}
+            className="group flex min-h-[44px] items-start gap-2.5 py-1"
+          >
+            <StepBox mark={step.state === 'done' ? 'full' : step.state === 'under_way' ? 'half' : 'none'} />
+            <span className="min-w-0">
+              <span className="block font-medium group-hover:underline">
+                {STEP_NAMES[step.key]}
+                <span className="sr-only">, {STATE_WORDS[step.state]}</span>
+              </span>
+              <span className="block text-sm text-ink-2">{step.words}</span>
+            </span>
+          </a>
+        </li>
+      ))}
+    </ol>
   );
 }
 
-function RollCallNow({ site, at }: { site: SiteUnderWay; at: string }) {
-  const { rollCall } = site;
-  if (site.roster === 0) return <>its units cannot answer one</>;
+const MOST_GAPS = 3;
+
+function Blocks({ site }: { site: SiteSteps }) {
+  const gaps = openGaps(site.steps);
+  if (gaps.length === 0)
+    return <p className="text-ink-2">Nothing blocks the handover. It waits to be made.</p>;
   return (
     <>
-      {number(site.heard)} of {number(site.roster)} heard
-      {site.heardUnknown > 0 && `, ${number(site.heardUnknown)} not on the as-built`}
-      <span className="block text-sm text-ink-2">
-        {!rollCall && 'not started'}
-        {rollCall && !rollCall.stoppedAt && (
-          <>
-            running since <SiteTime at={rollCall.startedAt} now={at} timeZone={site.timeZone} zone />, on
-            site: {rollCall.personOnSite}
-          </>
+      <h3 className="text-sm text-ink-2">
+        {gaps.length === 1 ? 'One point blocks the handover' : `${gaps.length} points block the handover`}
+      </h3>
+      <ul className="mt-1">
+        {gaps.slice(0, MOST_GAPS).map((gap) => (
+          <li key={gap.key}>{gap.words}</li>
+        ))}
+        {gaps.length > MOST_GAPS && (
+          <li>
+            <a href={paths.commissioningSite(site.id)} className="text-petrol hover:underline">
+              and {gaps.length - MOST_GAPS} more
+            </a>
+          </li>
         )}
-        {rollCall?.stoppedAt && (
-          <>
-            stopped <SiteTime at={rollCall.stoppedAt} now={at} timeZone={site.timeZone} zone />
-          </>
-        )}
-      </span>
+      </ul>
     </>
   );
 }
 
-/** The share of the roll that has answered, as a line that fills. */
-function Share({ site }: { site: SiteUnderWay }) {
-  if (site.roster === 0) return null;
-  const share = site.heard / site.roster;
+function Site({ site, at }: { site: SiteSteps; at: string }) {
+  const current = currentStep(site.steps);
+  const days = daysInStep(site, at);
   return (
-    <svg
-      width="100%"
-      height="8"
-      viewBox="0 0 100 8"
-      preserveAspectRatio="none"
-      aria-hidden="true"
-      className="mb-4 block"
+    <Sheet
+      id={`site-${site.id}`}
+      title={
+        <a href={paths.commissioningSite(site.id)} className="text-lg hover:underline">
+          {site.name}
+        </a>
+      }
+      aside={
+        <>
+          {site.place}
+          {site.place && ' · '}
+          {counted(site.strings, 'string')}, {counted(site.units, 'unit')}
+        </>
+      }
     >
-      <rect x="0" y="5" width="100" height="3" fill="var(--rule-faint)" />
-      <rect x="0" y="2" width={share * 100} height="6" fill="var(--petrol)" />
-    </svg>
+      <StepRow site={site} />
+      <div className="grid gap-x-8 gap-y-3 border-t border-rule-faint pt-3 lg:grid-cols-[minmax(0,1fr)_auto]">
+        <div className="min-w-0">
+          <Blocks site={site} />
+        </div>
+        <dl className="grid content-start gap-y-1 text-sm text-ink-2 lg:text-right">
+          {current && (
+            <div>
+              <dt className="sr-only">Step</dt>
+              <dd>
+                {STEP_NAMES[current.key]}
+                {days === null ? ', not begun' : days === 0 ? ', since today' : `, ${counted(days, 'day')}`}
+              </dd>
+            </div>
+          )}
+          <div>
+            <dt className="sr-only">On it</dt>
+            <dd>
+              {site.lastHand ? (
+                <>
+                  {site.lastHand.person},{' '}
+                  <RelativeTime at={site.lastHand.at} now={at} timeZone={site.timeZone} />
+                </>
+              ) : (
+                'nobody yet'
+              )}
+            </dd>
+          </div>
+          {site.rollCallRunning && (
+            <div>
+              <dt className="sr-only">Roll call</dt>
+              <dd>
+                <a href={paths.rollCall(site.id)} className="font-medium text-petrol hover:underline">
+                  The roll call is running
+                </a>
+              </dd>
+            </div>
+          )}
+        </dl>
+      </div>
+    </Sheet>
   );
 }
 
-/** Sites being commissioned, with what is recorded of each today. */
-export function SitesUnderWay({ sites, at }: { sites: readonly SiteUnderWay[]; at: string }) {
-  if (sites.length === 0) return <Notice kind="empty" title="Nothing is under way" />;
+/** Sites being commissioned: step by step, what blocks each, who is on it. */
+export function SitesUnderWay({ sites, at, view: initial, mayCreate }: Props) {
+  const [view, change] = useViewInUrl(initial, UNDER_WAY_DEFAULTS);
+  const shown = useMemo(() => listedSites(sites, view, at), [sites, view, at]);
   return (
-    <div className="grid gap-5">
-      {sites.map((site) => (
-        <Sheet
-          key={site.id}
-          id={`site-${site.id}`}
-          title={
-            <a href={paths.site(site.id)} className="text-lg hover:underline">
-              {site.name}
-            </a>
-          }
-          aside={site.place}
-        >
-          <Share site={site} />
-          <dl className="grid gap-x-6 gap-y-3 sm:grid-cols-2 lg:grid-cols-4">
-            <Known name="As-built">
-              {site.placed === site.slots
-                ? counted(site.slots, 'unit')
-                : `${number(site.placed)} of ${counted(site.slots, 'unit')} placed`}
-              , {counted(site.strings, 'string')}
-            </Known>
-            <Known name="Roll call">
-              <RollCallNow site={site} at={at} />
-            </Known>
-            <Known name="Meter readings">
-              {site.readings.lastAt ? (
-                <>
-                  {site.readings.strings} of {counted(site.strings, 'string')}, last{' '}
-                  <SiteTime at={site.readings.lastAt} now={at} timeZone={site.timeZone} zone />
-                </>
-              ) : (
-                'none recorded'
-              )}
-            </Known>
-            {site.checks.strings > 0 && (
-              <Known name="Install checks">
-                {site.checks.strings} of {counted(site.strings, 'string')}
-                {site.checks.failed > 0 && `, ${counted(site.checks.failed, 'check')} failed`}
-              </Known>
-            )}
-            <Known name="Shutdown test">
-              {site.lastTest
-                ? `${RESULTS[site.lastTest.result]}, ${longDate(site.lastTest.at, site.timeZone)}`
-                : 'none on record'}
-            </Known>
-          </dl>
-          {site.roster > 0 && (
-            <ButtonLink href={paths.rollCall(site.id)} weight="primary" className="mt-5">
-              {site.rollCall && !site.rollCall.stoppedAt ? 'Watch the roll call' : 'Go to the roll call'}
+    <>
+      <form
+        action={paths.commissioning()}
+        className="no-print mb-4 flex flex-wrap items-center gap-x-3 gap-y-2"
+        onSubmit={(event) => event.preventDefault()}
+      >
+        <input
+          type="search"
+          name="q"
+          aria-label="Filter by name, place or person"
+          placeholder="Filter by name, place or person"
+          autoComplete="off"
+          value={view.q}
+          onChange={(event) => change({ q: event.target.value }, 'typed')}
+          className={`${CONTROL} w-full placeholder:text-ink-3 sm:w-[260px]`}
+        />
+        <label className="flex items-center gap-2 text-sm text-ink-2">
+          At step
+          <select
+            name="step"
+            value={view.step}
+            onChange={(event) => change({ step: event.target.value as UnderWayView['step'] })}
+            className={CONTROL}
+          >
+            <option value="all">any</option>
+            {STEPS.map((step) => (
+              <option key={step} value={step}>
+                {STEP_NAMES[step]}
+              </option>
+            ))}
+          </select>
+        </label>
+        <label className="flex items-center gap-2 text-sm text-ink-2">
+          Sorted by
+          <select
+            name="sort"
+            value={view.sort}
+            onChange={(event) => change({ sort: event.target.value as UnderWayView['sort'] })}
+            className={CONTROL}
+          >
+            <option value="name">name</option>
+            <option value="days">days in step</option>
+            <option value="blocks">points that block</option>
+          </select>
+        </label>
+        <span className="flex flex-wrap gap-2 sm:ml-auto">
+          <ButtonLink href={withQuery(paths.api.commissioningCsv(), view)}>CSV</ButtonLink>
+          {mayCreate && (
+            <ButtonLink href={paths.newSite()} weight="primary">
+              Begin a site
             </ButtonLink>
           )}
-        </Sheet>
-      ))}
-    </div>
+        </span>
+      </form>
+      {sites.length === 0 && <Notice kind="empty" title="Nothing is under way" />}
+      {sites.length > 0 && shown.length === 0 && (
+        <Notice kind="empty" title="No site fits these filters">
+          Clear the search, or choose any step.
+        </Notice>
+      )}
+      <div className="grid gap-5">
+        {shown.map((site) => (
+          <Site key={site.id} site={site} at={at} />
+        ))}
+      </div>
+    </>
   );
 }

@@ -2,7 +2,6 @@ import { clock } from '../../drawings/times';
 import { counted, listed, number } from '../../drawings/numbers';
 import type { RollCallRun } from '../../schemas/api/roll-call';
 import type { CommandNow } from '../../schemas/api/now';
-import type { SiteUnderWay } from '../../schemas/api/commissioning';
 import type { RollTally, UnknownUnit } from './tally';
 
 /** The sentences of the roll call. Every one must be true in its state: they are read by people on roofs. */
@@ -139,17 +138,4 @@ export function nearWords(unknown: UnknownUnit): string {
   if (!first) return by;
   const lacks = (s: { name: string; missing: number }) => `${s.name}, which lacks ${s.missing}`;
   return second ? `${by}, as are ${lacks(first)}, and ${lacks(second)}` : `${by}, as is ${lacks(first)}`;
-}
-
-/** The heading of the list of sites under way. */
-export function underWayHeading(sites: readonly SiteUnderWay[]): string {
-  const running = sites.filter((s) => s.rollCall && !s.rollCall.stoppedAt);
-  if (sites.length === 0) return 'No site is being commissioned';
-  const [only] = running;
-  if (only && running.length === 1)
-    return `The roll call is running at ${only.name}: ${number(only.heard)} of ${number(only.roster)} heard`;
-  if (running.length > 1) return `Roll calls are running at ${counted(running.length, 'site')}`;
-  return sites.length === 1
-    ? 'One site is being commissioned'
-    : `${number(sites.length)} sites are being commissioned`;
 }

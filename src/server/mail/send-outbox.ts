@@ -28,7 +28,7 @@ const refusedForGood = (error: unknown): boolean => {
 /** The way out, as SMTP_URL says; undefined where a deployment sends no mail. */
 export function mailTransport(url = config().SMTP_URL): Transporter | undefined {
   if (!url) return undefined;
-  return createTransport(url, { connectionTimeout: 10_000, greetingTimeout: 10_000, socketTimeout: 30_000 });
+  return createTransport({ url, connectionTimeout: 10_000, greetingTimeout: 10_000, socketTimeout: 30_000 });
 }
 
 /**

@@ -40,22 +40,24 @@ export function csvText<Row>(columns: readonly Column<Row>[], rows: Iterable<Row
   return text;
 }
 
-/** A download. `name` without ending; what a header or a file system would choke on becomes a dash. */
+/** A name for a download: what a header or a file system would choke on becomes a dash. */
+export const fileName = (name: string): string =>
+  name
+    .normalize('NFKD')
+    .replace(/\p{M}/gu, '')
+    .replace(/[^A-Za-z0-9._-]+/g, '-')
+    .replace(/^[-.]+|-+$/g, '') || 'wakeline';
+
+/** A download. `name` without ending. */
 export function csvResponse<Row>(
   name: string,
   columns: readonly Column<Row>[],
   rows: Iterable<Row>,
 ): Response {
-  const plain =
-    name
-      .normalize('NFKD')
-      .replace(/\p{M}/gu, '')
-      .replace(/[^A-Za-z0-9._-]+/g, '-')
-      .replace(/^[-.]+|-+$/g, '') || 'wakeline';
   return new Response(csvText(columns, rows), {
     headers: {
       'content-type': 'text/csv; charset=utf-8; header=present',
-      'content-disposition': `attachment; filename="${plain}.csv"`,
+      'content-disposition': `attachment; filename="${fileName(name)}.csv"`,
       'cache-control': 'no-store',
       'x-content-type-options': 'nosniff',
     },

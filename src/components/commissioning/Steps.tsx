@@ -1,0 +1,95 @@
+import type { StepKey } from '../../domain/commissioning/steps';
+import { paths } from '../../schemas/paths';
+import type { StepNow } from '../../schemas/api/commissioning';
+
+export const STEP_NAMES: Record<StepKey, string> = {
+  as_built: 'As-built',
+  install_checks: 'Install checks',
+  meter_readings: 'Meter readings',
+  roll_call: 'Roll call',
+  shutdown_test: 'Shutdown test',
+  handover: 'Handover',
+};
+
+/** Where each step is worked on. */
+export const STEP_PAGES: Record<StepKey, (site: string) => string> = {
+  as_built: paths.asBuilt,
+  install_checks: paths.checks,
+  meter_readings: paths.readings,
+  roll_call: paths.rollCall,
+  shutdown_test: paths.shutdownTests,
+  handover: paths.handover,
+};
+
+export type StepMark = 'full' | 'half' | 'none' | 'now';
+
+/** The box of a step: ticked, half filled, empty, or filled with petrol where the reader is. */
+export function StepBox({ mark }: { mark: StepMark }) {
+  return (
+    <svg width="18" height="18" viewBox="0 0 18 18" aria-hidden="true" className="relative flex-none">
+      <rect
+        x="1"
+        y="1"
+        width="16"
+        height="16"
+        rx="2"
+        fill={mark === 'now' ? 'var(--petrol)' : 'var(--sheet)'}
+        stroke={mark === 'none' ? 'var(--ink-3)' : mark === 'now' ? 'var(--petrol)' : 'var(--ink)'}
+        strokeWidth="1.5"
+      />
+      {mark === 'half' && <rect x="1" y="9" width="16" height="8" fill="var(--ink)" />}
+      {mark === 'full' && (
+        <>
+          <rect x="1" y="1" width="16" height="16" rx="2" fill="var(--ink)" />
+          <path d="m5 9.2 2.8 2.8L13 6.6" fill="none" stroke="var(--sheet)" strokeWidth="1.8" />
+        </>
+      )}
+    </svg>
+  );
+}
+
+const STATE_MARK = { done: 'full', under_way: 'half', not_started: 'none' } as const;
+export const STATE_WORDS = { done: 'done', under_way: 'under way', not_started: 'not started' } as const;
+
+interface Props {
+  site: string;
+  steps: readonly Pick<StepNow, 'key' | 'state' | 'words'>[];
+  /** The step whose page this is. */
+  here?: StepKey;
+}
+
+/** The steps of a site as a column, each a link to where it is worked on; a row of them on narrow screens. */
+export function Steps({ site, steps, here }: Props) {
+  return (
+    <nav aria-label="Steps of commissioning">
+      <ol className="grid grid-cols-2 gap-x-6 sm:grid-cols-3 xl:grid-cols-1">
+        {steps.map((step) => {
+          const current = step.key === here;
+          return (
+            <li
+              key={step.key}
+              className="relative pb-5 xl:before:absolute xl:before:bottom-[3px] xl:before:left-2 xl:before:top-[23px] xl:before:w-[1.5px] xl:before:bg-rule xl:before:content-[''] xl:last:pb-0 xl:last:before:hidden"
+            >
+              <a
+                href={STEP_PAGES[step.key](site)}
+                aria-current={current ? 'step' : undefined}
+                className="group flex min-h-[44px] gap-3 xl:min-h-0"
+              >
+                <StepBox mark={current ? 'now' : STATE_MARK[step.state]} />
+                <span className="min-w-0">
+                  <span
+                    className={`block group-hover:underline ${current ? 'font-semibold' : 'font-medium'}`}
+                  >
+                    {STEP_NAMES[step.key]}
+                    <span className="sr-only">, {STATE_WORDS[step.state]}</span>
+                  </span>
+                  <span className="block text-sm text-ink-2">{step.words}</span>
+                </span>
+              </a>
+            </li>
+          );
+        })}
+      </ol>
+    </nav>
+  );
+}

@@ -1,0 +1,187 @@
+import { useQuery } from '@tanstack/react-query';
+import type { ReactNode } from 'react';
+import { STATE_WORDS, StepBox, STEP_NAMES, STEP_PAGES } from '../../components/commissioning/Steps';
+import { ButtonLink } from '../../components/ui/Button';
+import { Caution } from '../../components/ui/Caution';
+import { LiveHeading } from '../../components/ui/LiveHeading';
+import { Notice } from '../../components/ui/Notice';
+import { Sheet } from '../../components/ui/Sheet';
+import { SiteTime } from '../../components/ui/Time';
+import { openGaps } from '../../domain/commissioning/steps';
+import { counted } from '../../drawings/numbers';
+import { api } from '../../lib/api';
+import { useLive } from '../../lib/live-hook';
+import { queryClient } from '../../lib/query-client';
+import { paths } from '../../schemas/paths';
+import type { SiteSteps, StepNow } from '../../schemas/api/commissioning';
+import { Gaps } from './Gaps';
+import { siteHeading } from './under-way';
+
+interface Props {
+  initial: SiteSteps;
+  at: string;
+  mayAccept: boolean;
+  /** How to open the phone's page: made by the server. */
+  children?: ReactNode;
+}
+
+const DO: Record<StepNow['key'], string> = {
+  as_built: 'Open the as-built',
+  install_checks: 'Open the install checks',
+  meter_readings: 'Open the readings',
+  roll_call: 'Open the roll call',
+  shutdown_test: 'Open the shutdown tests',
+  handover: 'Open the handover',
+};
+const MOST_GAPS = 6;
+
+function StepSheet({
+  site,
+  step,
+  at,
+  mayAccept,
+  onAccepted,
+}: {
+  site: SiteSteps;
+  step: StepNow;
+  at: string;
+  mayAccept: boolean;
+  onAccepted: () => void;
+}) {
+  const open = step.gaps.filter((g) => !g.accepted);
+  const rest = step.gaps.length - MOST_GAPS;
+  return (
+    <Sheet
+      id={`step-${step.key}`}
+      title={
+        <span className="flex items-center gap-2.5">
+          <StepBox mark={step.state === 'done' ? 'full' : step.state === 'under_way' ? 'half' : 'none'} />
+          <span>
+            {STEP_NAMES[step.key]}
+            <span className="sr-only">, {STATE_WORDS[step.state]}</span>
+          </span>
+        </span>
+      }
+      aside={
+        <>
+          {step.words}
+          {step.startedAt && (
+            <>
+              {' · since '}
+              <SiteTime at={step.startedAt} now={at} timeZone={site.timeZone} />
+            </>
+          )}
+        </>
+      }
+    >
+      {step.gaps.length > 0 && (
+        <Gaps
+          site={site.id}
+          gaps={step.gaps.slice(0, MOST_GAPS)}
+          mayAccept={mayAccept}
+          onAccepted={onAccepted}
+        />
+      )}
+      {rest > 0 && (
+        <details className="border-t border-rule-faint pt-1">
+          <summary className="target cursor-pointer text-petrol">{counted(rest, 'more point')}</summary>
+          <Gaps
+            site={site.id}
+            gaps={step.gaps.slice(MOST_GAPS)}
+            mayAccept={mayAccept}
+            onAccepted={onAccepted}
+          />
+        </details>
+      )}
+      {step.gaps.length === 0 && step.key !== 'handover' && step.state === 'done' && (
+        <p className="text-ink-2">Nothing is open.</p>
+      )}
+      <ButtonLink
+        href={STEP_PAGES[step.key](site.id)}
+        weight={open.length > 0 && step.state === 'under_way' ? 'primary' : 'plain'}
+        className="mt-3"
+      >
+        {DO[step.key]}
+      </ButtonLink>
+    </Sheet>
+  );
+}
+
+/** One site on its way: each step, what blocks it, where it is worked on. */
+export function SiteOverview({ initial, at, mayAccept, children }: Props) {
+  const client = queryClient();
+  const key = ['commissioning', initial.id];
+  const { data: site, error } = useQuery(
+    {
+      queryKey: key,
+      queryFn: ({ signal }) => api<SiteSteps>(paths.api.commissioningSite(initial.id), { signal }),
+      initialData: initial,
+      refetchInterval: 60_000,
+    },
+    client,
+  );
+  const again = () => void client.invalidateQueries({ queryKey: key });
+  const status = useLive(`site:${initial.id}`, (_, kind) => {
+    if (kind === 'delta') again();
+  });
+  const finding = siteHeading(site);
+  const links: [string, string][] = [
+    ['Design checks', paths.designChecks(site.id)],
+    ['Roof plan', paths.roofPlan(site.id)],
+    ['Walk and ladder card', paths.walk(site.id)],
+    ['Which string a unit is in, by current', paths.membership(site.id)],
+    ['Who changed what', paths.asBuiltHistory(site.id)],
+    ['The site as it stands', paths.site(site.id)],
+  ];
+  return (
+    <>
+      <LiveHeading
+        finding={{ heading: finding.finding, sentence: finding.sentence }}
+        status={status}
+        timeZone={site.timeZone}
+        crumbs={[{ label: 'Commissioning', href: paths.commissioning() }, { label: site.name }]}
+      />
+      {error && (
+        <div className="mb-4">
+          <Notice kind="stale" title="The steps could not be read again">
+            {error.message}
+          </Notice>
+        </div>
+      )}
+      <div className="grid gap-5 lg:grid-cols-[minmax(0,1fr)_340px]">
+        <div className="grid min-w-0 content-start gap-5">
+          {site.steps.map((step) => (
+            <StepSheet
+              key={step.key}
+              site={site}
+              step={step}
+              at={at}
+              mayAccept={mayAccept && step.key !== 'handover'}
+              onAccepted={again}
+            />
+          ))}
+        </div>
+        <div className="grid content-start gap-5">
+          {openGaps(site.steps).length > 0 && (
+            <Caution strong="Treat every string as live">
+              until its roll call is complete and its shutdown has been measured. Local code and the authority
+              having jurisdiction come first.
+            </Caution>
+          )}
+          {children}
+          <Sheet id="more" title="Also for this site">
+            <ul>
+              {links.map(([words, href]) => (
+                <li key={href}>
+                  <a href={href} className="target inline-flex items-center text-petrol hover:underline">
+                    {words}
+                  </a>
+                </li>
+              ))}
+            </ul>
+          </Sheet>
+        </div>
+      </div>
+    </>
+  );
+}

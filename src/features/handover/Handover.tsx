@@ -1,0 +1,233 @@
+import { useQuery } from '@tanstack/react-query';
+import { useState } from 'react';
+import { Steps } from '../../components/commissioning/Steps';
+import { Button, ButtonLink } from '../../components/ui/Button';
+import { Heading } from '../../components/ui/Heading';
+import { Notice } from '../../components/ui/Notice';
+import { Sheet } from '../../components/ui/Sheet';
+import { SiteTime } from '../../components/ui/Time';
+import { openGaps } from '../../domain/commissioning/steps';
+import { counted, listed, number } from '../../drawings/numbers';
+import { api, ApiError } from '../../lib/api';
+import { queryClient } from '../../lib/query-client';
+import { paths } from '../../schemas/paths';
+import type { HandoverPage, PackItem } from '../../schemas/api/handover';
+
+interface Props {
+  initial: HandoverPage;
+  mayMake: boolean;
+}
+
+export function handoverFinding({ site, packs }: HandoverPage): { finding: string; sentence: string } {
+  const open = openGaps(site.steps);
+  const [newest] = packs;
+  if (open.length > 0)
+    return {
+      finding: `${counted(open.length, 'point blocks', 'points block')} the handover of ${site.name}`,
+      sentence: 'Settle each where it belongs, or have a manager accept it by name and with a reason.',
+    };
+  if (newest)
+    return {
+      finding: `${site.name} was handed over with version ${newest.version}`,
+      sentence: 'A later change makes a new version; every version is kept as it was.',
+    };
+  return {
+    finding: `${site.name} can be handed over`,
+    sentence: 'Everything before it is done, or its gaps are accepted by name.',
+  };
+}
+
+const size = (bytes: number): string =>
+  bytes < 1e6 ? `${number(Math.max(1, bytes / 1000))} kB` : `${number(bytes / 1e6, 1)} MB`;
+
+function Pack({ pack, page }: { pack: PackItem; page: HandoverPage }) {
+  return (
+    <li className="grid gap-x-6 gap-y-2 border-b border-rule-faint py-3 last:border-b-0 sm:grid-cols-[minmax(0,1fr)_auto]">
+      <div className="min-w-0">
+        <p className="font-semibold">Version {pack.version}</p>
+        <p className="text-sm text-ink-2">
+          {pack.madeBy}, <SiteTime at={pack.madeAt} now={page.at} timeZone={page.site.timeZone} zone />
+          {pack.openPoints > 0 && ` · ${counted(pack.openPoints, 'accepted gap')}`}
+        </p>
+        {pack.remark && <p className="mt-1">{pack.remark}</p>}
+        <p className="mt-1 break-all text-sm text-ink-2">Fingerprint {pack.fingerprint}</p>
+      </div>
+      <div className="flex flex-wrap content-start gap-2">
+        <ButtonLink href={`${paths.api.paper(pack.ref)}?form=pdf`}>PDF, {size(pack.pdfBytes)}</ButtonLink>
+        <ButtonLink href={`${paths.api.paper(pack.ref)}?form=csv`}>
+          As-built CSV, {size(pack.csvBytes)}
+        </ButtonLink>
+      </div>
+    </li>
+  );
+}
+
+function MakePanel({ page, onMade }: { page: HandoverPage; onMade: () => void }) {
+  const [remark, setRemark] = useState('');
+  const [tell, setTell] = useState(page.customers.length > 0);
+  const [busy, setBusy] = useState(false);
+  const [fault, setFault] = useState<ApiError | null>(null);
+  const make = async () => {
+    setBusy(true);
+    setFault(null);
+    try {
+      await api(paths.api.handover(page.site.id), { method: 'POST', body: { remark, tellCustomers: tell } });
+      setRemark('');
+      onMade();
+    } catch (error) {
+      if (!(error instanceof ApiError)) throw error;
+      setFault(error);
+    } finally {
+      setBusy(false);
+    }
+  };
+  const again = page.packs.length > 0;
+  return (
+    <Sheet id="make" title={again ? 'Make a new version' : 'Make the pack'}>
+      <form
+        onSubmit={(event) => {
+          event.preventDefault();
+          void make();
+        }}
+      >
+        <label htmlFor="remark" className="mb-1 block font-medium">
+          Remark
+        </label>
+        <textarea
+          id="remark"
+          rows={3}
+          value={remark}
+          onChange={(event) => setRemark(event.target.value)}
+          placeholder={again ? 'What has changed since the version before' : ''}
+          className="w-full rounded border border-rule bg-sheet px-3 py-2 text-[16px] placeholder:text-ink-3"
+        />
+        {page.customers.length > 0 ? (
+          <label className="target mt-2 flex items-center gap-2.5">
+            <input
+              type="checkbox"
+              checked={tell}
+              onChange={(event) => setTell(event.target.checked)}
+              className="h-5 w-5 accent-[var(--petrol)]"
+            />
+            Send {listed(page.customers)} a letter with the link
+          </label>
+        ) : (
+          <p className="mt-2 text-sm text-ink-2">No customer can see this site yet, so no letter is sent.</p>
+        )}
+        {fault && (
+          <div className="mt-3">
+            <Notice kind="failed" title={fault.message}>
+              {fault.fields.length > 0 && (
+                <ul>
+                  {fault.fields.map((f) => (
+                    <li key={f.field}>{f.message}</li>
+                  ))}
+                </ul>
+              )}
+            </Notice>
+          </div>
+        )}
+        <Button type="submit" weight="primary" disabled={busy} className="mt-3">
+          {busy ? 'Making the papers' : again ? 'Make a new version' : 'Hand the site over'}
+        </Button>
+        {!again && (
+          <p className="mt-2 text-sm text-ink-2">
+            The site becomes an operating one; its units are judged as such.
+          </p>
+        )}
+      </form>
+    </Sheet>
+  );
+}
+
+/** The handover of a site: what blocks it, its papers version by version, and the making of the next. */
+export function Handover({ initial, mayMake }: Props) {
+  const client = queryClient();
+  const key = ['handover', initial.site.id];
+  const { data: page, error } = useQuery(
+    {
+      queryKey: key,
+      queryFn: ({ signal }) => api<HandoverPage>(paths.api.handover(initial.site.id), { signal }),
+      initialData: initial,
+    },
+    client,
+  );
+  const words = handoverFinding(page);
+  const open = openGaps(page.site.steps);
+  return (
+    <>
+      <Heading
+        crumbs={[
+          { label: 'Commissioning', href: paths.commissioning() },
+          { label: page.site.name, href: paths.commissioningSite(page.site.id) },
+          { label: 'Handover' },
+        ]}
+        finding={words.finding}
+        sentence={words.sentence}
+      />
+      {error && (
+        <div className="mb-4">
+          <Notice kind="stale" title="The handover could not be read again">
+            {error.message}
+          </Notice>
+        </div>
+      )}
+      <div className="grid gap-5 lg:grid-cols-[minmax(0,1fr)_340px] xl:grid-cols-[200px_minmax(0,1fr)_340px]">
+        <div className="lg:col-span-2 xl:col-span-1">
+          <Steps site={page.site.id} steps={page.site.steps} here="handover" />
+        </div>
+        <div className="grid min-w-0 content-start gap-5">
+          {open.length > 0 && (
+            <Sheet
+              id="blocks"
+              title="What blocks it"
+              aside={
+                <a
+                  href={paths.commissioningSite(page.site.id)}
+                  className="target inline-flex items-center text-petrol hover:underline"
+                >
+                  Settle or accept
+                </a>
+              }
+            >
+              <ul className="divide-y divide-rule-faint">
+                {open.map((gap) => (
+                  <li key={gap.key} className="py-2">
+                    {gap.words}
+                  </li>
+                ))}
+              </ul>
+            </Sheet>
+          )}
+          <Sheet
+            id="packs"
+            title="Papers"
+            aside={page.packs.length > 0 && counted(page.packs.length, 'version')}
+          >
+            {page.packs.length === 0 ? (
+              <Notice kind="empty" title="No pack has been made" />
+            ) : (
+              <ul>
+                {page.packs.map((pack) => (
+                  <Pack key={pack.ref} pack={pack} page={page} />
+                ))}
+              </ul>
+            )}
+          </Sheet>
+        </div>
+        <div className="grid content-start gap-5">
+          {mayMake && open.length === 0 && (
+            <MakePanel page={page} onMade={() => void client.invalidateQueries({ queryKey: key })} />
+          )}
+          <Sheet id="inside" title="What a pack holds">
+            <p className="text-ink-2">
+              System data, people, single-line description, string layout with serials, equipment, operation
+              and maintenance, test results, install checks with photos, open points; the as-built as CSV.
+              Each page carries the fingerprint of the data.
+            </p>
+          </Sheet>
+        </div>
+      </div>
+    </>
+  );
+}

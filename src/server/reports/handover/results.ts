@@ -1,0 +1,281 @@
+import { CHECKS } from '../../../domain/commissioning/checks/list';
+import type { CheckDefinition } from '../../../domain/commissioning/checks/definition';
+import { number, quantity, volts } from '../../../drawings/numbers';
+import { PAPER } from '../../../drawings/paint';
+import { longDate } from '../../../drawings/times';
+import type { Paper } from '../pdf/paper';
+import type { PackData, PackTest } from './data';
+import { when } from './sections';
+
+/** The second half of the papers: what was measured, looked at, tested, and what stands open. */
+
+const STAGES: Record<string, string> = {
+  before_energising: 'before energising',
+  after_keep_alive: 'after keep-alive',
+  after_roll_call: 'after the roll call',
+};
+const OUTCOMES: Record<string, string> = {
+  as_expected: 'as expected',
+  finding: 'not as expected',
+  cant_tell: 'can’t tell: more than one explanation fits',
+  proves_nothing: 'proves nothing in this light',
+};
+export const RESULTS: Record<string, string> = {
+  passed: 'passed',
+  failed: 'not passed',
+  consistent: 'consistent: reports agree, not measured by instrument',
+  not_witnessed: 'not witnessed',
+};
+const CHECK_RESULTS: Record<string, string> = {
+  pass: 'pass',
+  fail: 'FAIL',
+  not_applicable: 'not applicable',
+};
+const BY_KEY = new Map<string, CheckDefinition>(CHECKS.map((c) => [c.key, c]));
+const nameOf = (key: string): string => BY_KEY.get(key)?.name ?? key.replaceAll('_', ' ');
+
+/** Figures of a check in words; connectors by the name that the catalogue has. */
+export function figureWords(check: PackData['checks'][number], data: PackData): string {
+  const definition = BY_KEY.get(check.check);
+  return Object.entries(check.figures)
+    .map(([key, value]) => {
+      const figure = definition?.figures.find((f) => f.key === key);
+      const name = figure?.name ?? key;
+      if (figure?.kind === 'number' && typeof value === 'number')
+        return `${name} ${quantity(value, figure.unit, Number.isInteger(value) ? 0 : 2)}`;
+      if (figure?.kind === 'choice')
+        return `${name}: ${figure.options.find((o) => o.value === String(value))?.words ?? String(value)}`;
+      if (figure?.kind === 'connector')
+        return `${name}: ${data.connectorTypes.find((c) => c.id === value)?.name ?? 'a type that is no longer listed'}`;
+      return `${name}: ${String(value)}`;
+    })
+    .join('; ');
+}
+
+const ORDER = ['positive_to_negative', 'positive_to_earth', 'negative_to_earth'];
+
+function readings(paper: Paper, data: PackData): void {
+  paper.heading('Polarity and open-circuit voltages', 2);
+  paper.text(
+    'Volts at the home run, string open and isolated. Expected: what should be at that stage, two standard deviations to either side. A minus sign in the first column means reversed.',
+    { size: 8.5, colour: PAPER.ink2 },
+  );
+  const groups = new Map<string, PackData['readings']>();
+  for (const r of data.readings) {
+    const key = `${r.string}\n${r.stage}`;
+    groups.set(key, [...(groups.get(key) ?? []), r]);
+  }
+  paper.table(
+    [
+      { header: 'String', share: 1.1 },
+      { header: 'Stage', share: 1.8 },
+      { header: '+ to −', share: 1.2, align: 'right' },
+      { header: 'Expected', share: 1.9, align: 'right' },
+      { header: '+ to earth', share: 1.2, align: 'right' },
+      { header: '− to earth', share: 1.2, align: 'right' },
+      { header: 'Finding', share: 3.4 },
+      { header: 'Taken by', share: 2.2 },
+    ],
+    [...groups.values()].map((group) => {
+      const of = (kind: string) => group.find((r) => r.kind === kind);
+      const [main, positive, negative] = ORDER.map(of);
+      const finding = main?.finding;
+      const newest = [...group].sort((a, b) => a.at.localeCompare(b.at)).at(-1);
+      return [
+        group[0]?.string ?? '',
+        STAGES[group[0]?.stage ?? ''] ?? '',
+        volts(main?.voltage),
+        finding?.expectedLowV != null && finding.expectedHighV != null
+          ? `${number(finding.expectedLowV, 1)} to ${number(finding.expectedHighV, 1)} V`
+          : '',
+        volts(positive?.voltage),
+        volts(negative?.voltage),
+        finding ? `${OUTCOMES[finding.outcome] ?? finding.outcome}. ${finding.headline}` : 'not judged',
+        newest ? `${newest.person}, ${longDate(newest.at, data.site.timeZone)}` : '',
+      ];
+    }),
+    'No reading is recorded.',
+  );
+}
+
+const MEASURED_CHECKS = ['insulation', 'earth_continuity', 'voltage_to_earth', 'string_current'] as const;
+
+function measuredChecks(paper: Paper, data: PackData): void {
+  for (const key of MEASURED_CHECKS) {
+    const rows = data.checks.filter((c) => c.check === key);
+    paper.heading(nameOf(key), 2);
+    const source = BY_KEY.get(key)?.source;
+    if (source) paper.text(source, { size: 8.5, colour: PAPER.ink2 });
+    paper.table(
+      [
+        { header: 'String', share: 1 },
+        { header: 'Result', share: 1.3 },
+        { header: 'Figures', share: 4 },
+        { header: 'By', share: 2.2 },
+      ],
+      rows.map((c) => [
+        c.string,
+        CHECK_RESULTS[c.result] ?? c.result,
+        [figureWords(c, data), c.reason, c.note].filter(Boolean).join('. '),
+        `${c.person}, ${longDate(c.at, data.site.timeZone)}`,
+      ]),
+      'None is recorded.',
+    );
+  }
+}
+
+function rollCall(paper: Paper, data: PackData): void {
+  paper.heading('Functional test: roll call', 2);
+  for (const run of data.rollCalls)
+    paper.text(
+      `Started ${when(run.startedAt, data)} by ${run.startedBy}, on site: ${run.personOnSite}; ${run.stoppedAt ? `stopped ${when(run.stoppedAt, data)}` : 'still running'}.`,
+      { size: 9 },
+    );
+  paper.table(
+    [
+      { header: 'String', share: 1 },
+      { header: 'Heard', share: 1, align: 'right' },
+      { header: 'On the as-built', share: 1, align: 'right' },
+      { header: 'Weakest signal', share: 1, align: 'right' },
+    ],
+    data.heard.map((h) => [h.string, number(h.heard), number(h.roster), quantity(h.weakest, 'dBm')]),
+    'No unit of this site can answer a roll call.',
+  );
+  if (data.heardUnknown.length > 0)
+    paper.text(`Heard, and on no slot: ${data.heardUnknown.join(', ')}.`, { size: 9 });
+}
+
+function shutdownTests(paper: Paper, data: PackData, tests: readonly PackTest[]): void {
+  paper.heading('Shutdown tests', 2);
+  paper.text(
+    'Only a rated instrument at the home run’s inverter end witnesses a pass. What units report alone is called consistent.',
+    { size: 8.5, colour: PAPER.ink2 },
+  );
+  if (tests.length === 0) paper.text('No shutdown test is on record.');
+  for (const test of tests) {
+    paper.heading(`${test.zone}: ${RESULTS[test.result] ?? test.result}`, 3);
+    paper.text(test.headline, { size: 9.5 });
+    paper.facts([
+      ['At', when(test.at, data)],
+      ['Initiator', test.initiator],
+      ...test.facts,
+      ['Signed by', test.signedBy],
+      ['Fingerprint of the test', test.fingerprint],
+    ]);
+    paper.table(
+      [
+        { header: 'String', share: 1 },
+        { header: 'Result', share: 2 },
+        { header: 'Highest', share: 1, align: 'right' },
+        { header: 'Slowest unit', share: 1.6, align: 'right' },
+        { header: 'What was seen', share: 5 },
+      ],
+      test.strings.map((s) => [s.name, RESULTS[s.result] ?? s.result, volts(s.highestV), s.slowest, s.words]),
+    );
+  }
+}
+
+export function testResults(paper: Paper, data: PackData, tests: readonly PackTest[]): void {
+  paper.heading('7  Test results', 1);
+  readings(paper, data);
+  measuredChecks(paper, data);
+  rollCall(paper, data);
+  shutdownTests(paper, data, tests);
+}
+
+const SHORT: Record<string, string> = { pass: 'pass', fail: 'FAIL', not_applicable: 'n/a' };
+const PHOTO = { width: 112, height: 84, gap: 10 };
+
+export function installChecks(paper: Paper, data: PackData, photos: ReadonlyMap<string, Buffer>): void {
+  paper.heading('8  Install checks', 1);
+  const signed = new Map(data.signOffs.map((s) => [s.string, s]));
+  for (const s of data.strings) {
+    const checks = data.checks.filter((c) => c.string === s.name);
+    const sign = signed.get(s.name);
+    paper.heading(s.name, 2);
+    paper.text(
+      sign
+        ? `Signed by ${sign.person}, ${when(sign.at, data)}${sign.stale ? '; recorded anew since, and not signed again' : ''}.`
+        : 'Not signed.',
+      { size: 9, weight: sign && !sign.stale ? 400 : 600 },
+    );
+    paper.table(
+      [
+        { header: 'Check', share: 2.2 },
+        { header: 'Result', share: 0.8 },
+        { header: 'Figures, reason, note', share: 4 },
+        { header: 'By', share: 2 },
+      ],
+      checks.map((c) => [
+        nameOf(c.check),
+        SHORT[c.result] ?? c.result,
+        [figureWords(c, data), c.reason, c.note].filter(Boolean).join('. '),
+        `${c.person}, ${longDate(c.at, data.site.timeZone)}`,
+      ]),
+      'No check is recorded.',
+    );
+    pictures(
+      paper,
+      data,
+      data.photos.filter((p) => p.string === s.name),
+      photos,
+    );
+  }
+}
+
+function pictures(
+  paper: Paper,
+  data: PackData,
+  shown: PackData['photos'],
+  photos: ReadonlyMap<string, Buffer>,
+): void {
+  const perRow = Math.floor((paper.width + PHOTO.gap) / (PHOTO.width + PHOTO.gap));
+  for (let i = 0; i < shown.length; i += perRow)
+    paper.figure(PHOTO.height + 34, (x, y) => {
+      shown.slice(i, i + perRow).forEach((photo, k) => {
+        const left = x + k * (PHOTO.width + PHOTO.gap);
+        const bytes = photos.get(photo.ref);
+        paper.pen.rect(left, y, PHOTO.width, PHOTO.height).lineWidth(0.5).strokeColor(PAPER.rule).stroke();
+        if (bytes)
+          paper.pen.image(bytes, left, y, {
+            fit: [PHOTO.width, PHOTO.height],
+            align: 'center',
+            valign: 'center',
+          });
+        paper.setAt(
+          `${photo.note || photo.name}\n${photo.person ?? ''} ${longDate(photo.at, data.site.timeZone)}`.slice(
+            0,
+            90,
+          ),
+          left,
+          y + PHOTO.height + 3,
+          PHOTO.width,
+          { size: 7, colour: PAPER.ink2 },
+        );
+      });
+    });
+}
+
+export function openPoints(paper: Paper, data: PackData, design: readonly string[]): void {
+  paper.heading('9  Open points', 1);
+  if (data.gaps.length === 0 && design.length === 0)
+    paper.text('None. Every step was done before the handover.');
+  if (data.gaps.length > 0) {
+    paper.heading('Accepted as they are', 2);
+    paper.table(
+      [
+        { header: 'Point', share: 3 },
+        { header: 'Reason', share: 4 },
+        { header: 'Accepted by', share: 2 },
+      ],
+      data.gaps.map((g) => [g.words, g.reason, `${g.person}, ${longDate(g.at, data.site.timeZone)}`]),
+    );
+  }
+  if (design.length > 0) {
+    paper.heading('Design checks that are exceeded', 2);
+    for (const words of design) paper.text(`–  ${words}`, { size: 9.5 });
+  }
+  const other = data.photos.filter((p) => p.string === null);
+  if (other.length > 0)
+    paper.text(`${other.length} more photos of the site are kept with it.`, { size: 9, colour: PAPER.ink2 });
+}

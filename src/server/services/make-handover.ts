@@ -1,0 +1,155 @@
+import sharp from 'sharp';
+import type { Actor } from '../../domain/access/permissions';
+import { commissioningSteps, openGaps } from '../../domain/commissioning/steps';
+import { localDay } from '../../drawings/times';
+import type { MakeHandover, PackItem } from '../../schemas/api/handover';
+import { paths } from '../../schemas/paths';
+import { publicUrl } from '../config';
+import type { Tx } from '../db/transaction';
+import { AppError, found } from '../errors';
+import { letter } from '../mail/letter';
+import { commissioningFacts } from '../queries/commissioning-facts';
+import {
+  addPack,
+  beginOperating,
+  customersOf,
+  nextVersion,
+  packsOf,
+  type PackRow,
+} from '../queries/handover';
+import { handoverRows, thumbnailsOf } from '../queries/handover-data';
+import { tellAsBuiltChanged, tellSiteChanged } from '../queries/live-notices';
+import { addMessage } from '../queries/outbox';
+import { addAuditEntry, findPersonName } from '../queries/people';
+import { visibleSite, type VisibleSite } from '../queries/visible-site';
+import { fingerprintOf } from '../reports/fingerprint';
+import { packData, type PackData } from '../reports/handover/data';
+import { asBuiltCsv, handoverPdf } from '../reports/handover/document';
+import { designWords } from './handover-design';
+import { packTests } from './handover-tests';
+
+/** Photos on paper need no more than this many bytes each, and not every one of thousands. */
+const MOST_PHOTOS = 400;
+
+export const packItem = (row: PackRow): PackItem => ({
+  ref: row.ref,
+  version: row.version,
+  madeBy: row.madeBy,
+  madeAt: row.madeAt.toISOString(),
+  remark: row.remark,
+  fingerprint: row.fingerprint,
+  pdfBytes: row.pdfBytes,
+  csvBytes: row.csvBytes,
+  openPoints: row.openPoints,
+});
+
+/**
+ * Makes the papers of a site as it stands, keeps them as the next version, and lets the site operate. With
+ * `tellCustomers` a letter with the link waits in the outbox for each customer of the site.
+ *
+ * @throws AppError not_found · conflict where points still block: each is named
+ */
+export async function makeHandover(
+  tx: Tx,
+  actor: Actor,
+  siteRef: string,
+  { remark, tellCustomers }: MakeHandover,
+  at: Date,
+  address: string | null,
+): Promise<PackItem> {
+  const site = found(await visibleSite(tx, siteRef), 'site');
+  const version = await nextVersion(tx, site.id);
+  const facts = found((await commissioningFacts(tx, [site.id])).get(site.id), 'site');
+  const open = openGaps(commissioningSteps(facts));
+  if (open.length > 0)
+    throw new AppError('conflict', {
+      message: `${open.length === 1 ? 'One point still blocks' : `${open.length} points still block`} the handover. Settle each, or have a manager accept it by name.`,
+      fields: open.slice(0, 50).map((gap) => ({ field: gap.key, message: gap.words })),
+    });
+
+  const data = packData.parse(await handoverRows(tx, site.id));
+  const tests = await packTests(tx, data);
+  const design = await designWords(tx, site.id, at);
+  const fingerprint = fingerprintOf({ data, tests, design });
+  const madeBy = (await findPersonName(tx, actor.personId)) ?? '';
+  const pdf = await handoverPdf(
+    data,
+    { version, at, madeBy, remark, fingerprint },
+    { tests, design, photos: await photosOf(tx, site.id, data) },
+  );
+  const ref = await addPack(tx, {
+    siteId: site.id,
+    version,
+    personId: actor.personId,
+    at,
+    remark,
+    fingerprint,
+    data: { ...data, tests, design },
+    pdf,
+    csv: Buffer.from(asBuiltCsv(data), 'utf8'),
+  });
+  const began = await beginOperating(tx, site.id, localDay(at, site.timeZone));
+  await addAuditEntry(tx, {
+    organisationId: site.organisationId,
+    personId: actor.personId,
+    address,
+    action: 'handover.made',
+    subject: `site ${site.ref}`,
+    siteId: site.id,
+    reason: remark,
+    after: {
+      version,
+      fingerprint,
+      acceptedGaps: data.gaps.length,
+      stageBecame: began ? 'operating' : site.stage,
+    },
+  });
+  if (tellCustomers) await tellOf(tx, site, { ref, version });
+  if (began) await tellAsBuiltChanged(tx, site.id);
+  await tellSiteChanged(tx, site.id);
+  const made = (await packsOf(tx, site.id)).find((p) => p.ref === ref);
+  return packItem(found(made, 'pack'));
+}
+
+/** Small pictures as JPEG, the one form that paper takes from everything. */
+async function photosOf(tx: Tx, siteId: number, data: PackData): Promise<Map<string, Buffer>> {
+  const all = await thumbnailsOf(tx, siteId);
+  const photos = new Map<string, Buffer>();
+  for (const { ref } of data.photos.slice(0, MOST_PHOTOS)) {
+    const bytes = all.get(ref);
+    if (bytes)
+      photos.set(ref, await sharp(bytes).flatten({ background: '#ffffff' }).jpeg({ quality: 82 }).toBuffer());
+  }
+  return photos;
+}
+
+async function tellOf(tx: Tx, site: VisibleSite, pack: { ref: string; version: number }): Promise<void> {
+  const href = `${publicUrl()}${paths.customer(site.ref)}`;
+  for (const customer of await customersOf(tx, site.id)) {
+    const { text, html } = letter({
+      greeting: `Hello ${customer.name}`,
+      paragraphs: [
+        pack.version === 1
+          ? `The solar system of ${site.name} has been handed over. Its papers are ready for you: how it is built, what was measured, and how to look after it.`
+          : `The papers of ${site.name} have been renewed: this is version ${pack.version}. The earlier versions stay available.`,
+        'Keep them where the people who work on the roof will find them.',
+      ],
+      action: { words: 'See your site and its papers', href },
+      footer: `You get this letter because you look after ${site.name}. It was sent by Wakeline for the people who built it.`,
+    });
+    await addMessage(tx, {
+      organisationId: site.organisationId,
+      personId: customer.personId,
+      siteId: site.id,
+      kind: 'handover',
+      eventKey: `handover:${pack.ref}`,
+      to: { address: customer.email, name: customer.name },
+      subject:
+        pack.version === 1
+          ? `${site.name}: your papers are ready`
+          : `${site.name}: new papers, version ${pack.version}`,
+      text,
+      html,
+    });
+  }
+}
