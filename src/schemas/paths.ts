@@ -70,7 +70,6 @@ export const paths = {
     walkCsv: (site: string) => `/api/sites/${site}/walk/stops.csv`,
     membership: (site: string) => `/api/sites/${site}/membership`,
     membershipCsv: (site: string) => `/api/sites/${site}/membership/units.csv`,
-    membershipCurrents: (site: string) => `/api/sites/${site}/membership/currents`,
     isolation: (site: string) => `/api/sites/${site}/isolation`,
     isolationStop: (site: string) => `/api/sites/${site}/isolation/stop`,
     commissioningCsv: () => '/api/commissioning.csv',

@@ -2,6 +2,7 @@ import { asSignIn, type Tx } from '../db/transaction';
 
 export interface PersonRow {
   id: number;
+  ref: string;
   organisationId: number;
   organisationName: string;
   timeZone: string;
@@ -16,7 +17,7 @@ export interface PersonRow {
 export async function personOfSession(personId: number): Promise<PersonRow | undefined> {
   return asSignIn(async (tx) => {
     const { rows } = await tx.raw<{ rows: PersonRow[] }>(
-      `select p.id, p.organisation_id as "organisationId", o.name as "organisationName", o.time_zone as "timeZone", p.email, p.name, p.role, p.theme,
+      `select p.id, p.ref, p.organisation_id as "organisationId", o.name as "organisationName", o.time_zone as "timeZone", p.email, p.name, p.role, p.theme,
               coalesce((select array_agg(site_id) from site_access a where a.person_id = p.id), '{}') as sites
        from person p join organisation o on o.id = p.organisation_id
        where p.id = ? and p.active`,
@@ -38,6 +39,16 @@ export async function credentialsOf(
   );
 }
 
+/** What a signature compares; undefined when the person has been deactivated meanwhile. */
+export async function passwordHashOf(personId: number): Promise<string | undefined> {
+  const row = await asSignIn((tx) =>
+    tx('person')
+      .where({ id: personId, active: true })
+      .first<{ hash: string } | undefined>({ hash: 'password_hash' }),
+  );
+  return row?.hash;
+}
+
 export async function markSeen(personId: number): Promise<void> {
   await asSignIn((tx) => tx('person').where('id', personId).update({ last_seen_at: tx.fn.now() }));
 }
@@ -46,26 +57,53 @@ export async function setTheme(tx: Tx, personId: number, theme: string): Promise
   await tx('person').where('id', personId).update({ theme });
 }
 
-export async function addAuditEntry(
-  tx: Tx,
-  entry: {
-    organisationId: number;
-    personId: number;
-    address?: string | null;
-    action: string;
-    subject: string;
-    before?: unknown;
-    after?: unknown;
-  },
-): Promise<void> {
-  const json = (v: unknown) => (v === undefined ? null : JSON.stringify(v));
-  await tx('audit_entry').insert({
-    organisation_id: entry.organisationId,
-    person_id: entry.personId,
-    address: entry.address ?? null,
-    action: entry.action,
-    subject: entry.subject,
-    before: json(entry.before),
-    after: json(entry.after),
-  });
+export interface AuditEntry {
+  organisationId: number;
+  personId: number;
+  address?: string | null | undefined;
+  action: string;
+  subject: string;
+  before?: unknown;
+  after?: unknown;
+  siteId?: number | null | undefined;
+  stringId?: number | null | undefined;
+  /** Why, in the person's words. */
+  reason?: string | undefined;
+}
+
+/** A person of the actor's organisation by number. */
+export async function findPersonName(tx: Tx, personId: number): Promise<string | undefined> {
+  const row = await tx<{ id: number; name: string }>('person').where({ id: personId }).first('name');
+  return row?.name;
+}
+
+export const addAuditEntry = (tx: Tx, entry: AuditEntry): Promise<void> => addAuditEntries(tx, [entry]);
+
+/** Many at once, in one statement; they keep the order given. */
+export async function addAuditEntries(tx: Tx, entries: readonly AuditEntry[]): Promise<void> {
+  if (entries.length === 0) return;
+  await tx.raw(
+    `insert into audit_entry (organisation_id, person_id, address, action, subject, before, after, site_id, string_id, reason)
+     select o, p, address, action, subject, before, after, site_id, string_id, reason
+     from rows from (jsonb_to_recordset(?::jsonb) as (o int4, p int4, address text, action text, subject text,
+         before jsonb, after jsonb, site_id int4, string_id int4, reason text))
+       with ordinality as x(o, p, address, action, subject, before, after, site_id, string_id, reason, n)
+     order by n`,
+    [
+      JSON.stringify(
+        entries.map((e) => ({
+          o: e.organisationId,
+          p: e.personId,
+          address: e.address ?? null,
+          action: e.action,
+          subject: e.subject,
+          before: e.before ?? null,
+          after: e.after ?? null,
+          site_id: e.siteId ?? null,
+          string_id: e.stringId ?? null,
+          reason: e.reason ?? '',
+        })),
+      ),
+    ],
+  );
 }
