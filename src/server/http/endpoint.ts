@@ -1,6 +1,7 @@
 import type { APIContext, APIRoute } from 'astro';
 import { z } from 'zod';
 import { mayUse, type Actor, type Permission } from '../../domain/access/permissions';
+import { PERSON_HEADER } from '../../schemas/api/capture';
 import { asActor, type Tx } from '../db/transaction';
 import { AppError } from '../errors';
 import { readBody } from './body';
@@ -15,6 +16,8 @@ export interface EndpointSpec<P extends z.ZodType, Q extends z.ZodType, B extend
   params?: P;
   query?: Q;
   body?: B;
+  /** For a route whose bodies are larger than usual. */
+  bodyMaxBytes?: number;
 }
 
 export interface Call<P, Q, B> {
@@ -23,9 +26,11 @@ export interface Call<P, Q, B> {
   body: B;
   context: APIContext;
 }
-export interface ActorCall<P, Q, B> extends Call<P, Q, B> {
+export interface ActorCall<P, Q, B, R = undefined> extends Call<P, Q, B> {
   actor: Actor;
   tx: Tx;
+  /** What `receive` made of the body. */
+  received: R;
 }
 
 export function checked<T extends z.ZodType>(
@@ -64,26 +69,45 @@ async function parsed<P extends z.ZodType, Q extends z.ZodType, B extends z.ZodT
   return {
     params: checked(spec.params, context.params, 'path'),
     query: checked(spec.query, Object.fromEntries(context.url.searchParams), 'query'),
-    body: spec.body ? checked(spec.body, await readBody(context.request), 'body') : (undefined as z.infer<B>),
+    body: spec.body
+      ? checked(spec.body, await readBody(context.request, spec.bodyMaxBytes), 'body')
+      : (undefined as z.infer<B>),
     context,
   };
 }
 
+/** A phone names whose record it sends: it may be another person's by now, who signed in on the same phone. */
+function checkPerson({ request, locals }: APIContext): void {
+  const named = request.headers.get(PERSON_HEADER);
+  if (named !== null && named !== locals.viewer?.id)
+    throw new AppError('forbidden', {
+      message:
+        'Another person is signed in by now. Sign in as the person who recorded this, then it is sent.',
+      fields: [{ field: PERSON_HEADER, message: 'Another person is signed in by now.' }],
+    });
+}
+
 /** For signed-in people: runs inside one transaction that sees only what the actor may see. */
-export function endpoint<P extends z.ZodType, Q extends z.ZodType, B extends z.ZodType>(
-  spec: EndpointSpec<P, Q, B> & { permission: Permission },
-  run: (call: ActorCall<z.infer<P>, z.infer<Q>, z.infer<B>>) => Promise<unknown>,
+export function endpoint<P extends z.ZodType, Q extends z.ZodType, B extends z.ZodType, R = undefined>(
+  spec: EndpointSpec<P, Q, B> & {
+    permission: Permission;
+    /** Takes a body that is no JSON, before the transaction begins: a slow sender holds no connection. */
+    receive?: (request: Request, query: z.infer<Q>) => Promise<R>;
+  },
+  run: (call: ActorCall<z.infer<P>, z.infer<Q>, z.infer<B>, R>) => Promise<unknown>,
 ): APIRoute {
   return async (context) => {
     try {
       const { actor } = context.locals;
       if (!actor) throw new AppError('unauthenticated', { message: 'Sign in, then try again.' });
+      checkPerson(context);
       if (!mayUse(actor.role, spec.permission))
         throw new AppError('forbidden', {
           message: `The role ${actor.role} does not include this. Ask a manager.`,
         });
       const call = await parsed(spec, context);
-      return reply(await asActor(actor, (tx) => run({ ...call, actor, tx })));
+      const received = (await spec.receive?.(context.request, call.query)) as R;
+      return reply(await asActor(actor, (tx) => run({ ...call, actor, tx, received })));
     } catch (error) {
       return problem(error, context.locals.requestId);
     }

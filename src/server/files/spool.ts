@@ -1,0 +1,80 @@
+import { createWriteStream } from 'node:fs';
+import { mkdtemp, rm } from 'node:fs/promises';
+import { tmpdir } from 'node:os';
+import path from 'node:path';
+import { Readable, Transform } from 'node:stream';
+import { pipeline } from 'node:stream/promises';
+import type { ReadableStream } from 'node:stream/web';
+import { AppError } from '../errors';
+import { SNIFF_BYTES } from './sniff';
+
+/** A body on disk: however large it is, no more than a chunk of it lies in memory. */
+export interface Spooled {
+  path: string;
+  bytes: number;
+  head: Buffer;
+}
+
+const megabytes = (bytes: number): number => Math.round(bytes / (1024 * 1024));
+const tooLarge = (limit: number): AppError =>
+  new AppError('too_large', {
+    message: `The file is larger than ${megabytes(limit)} MB. Take the photo with a lower resolution, or make the file smaller.`,
+    fields: [{ field: 'body', message: `At most ${megabytes(limit)} MB` }],
+  });
+
+/**
+ * Writes a body to a file of its own, hands it to `use` and takes it away again. Cut off where it grows past `limit`,
+ * whatever its length header says.
+ * @throws AppError too_large · invalid (nothing came, or it broke off)
+ */
+export async function spooled<T>(
+  request: Request,
+  limit: number,
+  use: (file: Spooled) => Promise<T>,
+): Promise<T> {
+  if (Number(request.headers.get('content-length') ?? 0) > limit) throw tooLarge(limit);
+  if (!request.body)
+    throw new AppError('invalid', {
+      message: 'No file came. Choose one and send it again.',
+      fields: [{ field: 'body', message: 'Send the file as the body.' }],
+    });
+  const folder = await mkdtemp(path.join(tmpdir(), 'wakeline-file-'));
+  try {
+    const file = path.join(folder, 'body');
+    let bytes = 0;
+    let head = Buffer.alloc(0);
+    const counted = new Transform({
+      transform(chunk: Buffer, _encoding, done) {
+        bytes += chunk.length;
+        if (bytes > limit) return done(tooLarge(limit));
+        if (head.length < SNIFF_BYTES)
+          head = Buffer.concat([head, chunk.subarray(0, SNIFF_BYTES - head.length)]);
+        done(null, chunk);
+      },
+    });
+    try {
+      await pipeline(
+        Readable.fromWeb(request.body as ReadableStream<Uint8Array>),
+        counted,
+        createWriteStream(file, { mode: 0o600 }),
+      );
+    } catch (error) {
+      if (error instanceof AppError || !brokeOff(error)) throw error;
+      throw new AppError('invalid', {
+        message: 'The upload broke off. Send the file again; what arrived twice is kept once.',
+        fields: [{ field: 'body', message: 'The upload broke off.' }],
+      });
+    }
+    return await use({ path: file, bytes, head });
+  } finally {
+    await rm(folder, { recursive: true, force: true });
+  }
+}
+
+/** The sender went away; a full disk is another matter. */
+const brokeOff = (error: unknown): boolean =>
+  error instanceof Error &&
+  (error.name === 'AbortError' ||
+    ['ERR_STREAM_PREMATURE_CLOSE', 'ECONNRESET', 'UND_ERR_SOCKET', 'ABORT_ERR'].includes(
+      (error as { code?: string }).code ?? '',
+    ));

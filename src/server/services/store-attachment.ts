@@ -1,0 +1,107 @@
+import { createHash } from 'node:crypto';
+import { readFile } from 'node:fs/promises';
+import { mayUse, type Actor } from '../../domain/access/permissions';
+import { PHOTO_MAX_BYTES, type AttachmentItem, type AttachmentQuery } from '../../schemas/api/attachments';
+import type { Tx } from '../db/transaction';
+import { AppError, found } from '../errors';
+import { readPhoto } from '../files/photo';
+import { sniff } from '../files/sniff';
+import { spooled } from '../files/spool';
+import { attachmentByRef, attachmentOut, insertAttachment } from '../queries/attachments';
+import { lockString } from '../queries/captured-site';
+import { tellSiteChanged } from '../queries/live-notices';
+import { visibleSite } from '../queries/visible-site';
+import type { Recorded } from './record-check';
+import { clockFault, refTaken, refuseFaults } from './recorded';
+
+/** A file that came in, as it will be kept. */
+export interface ReceivedFile {
+  mediaType: string;
+  data: Buffer;
+  width: number | null;
+  height: number | null;
+  thumbnail: Buffer | null;
+}
+
+const refused = (message: string): AppError =>
+  new AppError('invalid', { message, fields: [{ field: 'body', message }] });
+
+/**
+ * Takes the body of a request as a photo, or as a document where evidence is sent. No transaction is open meanwhile:
+ * a phone may take minutes.
+ * @throws AppError too_large · invalid (what it is instead, and what to do)
+ */
+export const receiveFile = (request: Request, query: AttachmentQuery): Promise<ReceivedFile> =>
+  spooled(request, PHOTO_MAX_BYTES, async (file) => {
+    const { kind, fault } = sniff(file.head);
+    if (kind === null) throw refused(`${query.name}: ${fault}`);
+    if (kind !== 'pdf')
+      return { mediaType: 'image/jpeg', ...(await readPhoto(file.path, query.keepPlace === 'yes')) };
+    if (query.subject !== 'connector_pair')
+      throw refused(
+        `${query.name}: This is a PDF. Documents are taken as evidence for connector pairs only; here send a JPEG, PNG or WebP picture.`,
+      );
+    return {
+      mediaType: 'application/pdf',
+      data: await readFile(file.path),
+      width: null,
+      height: null,
+      thumbnail: null,
+    };
+  });
+
+/**
+ * Keeps a file with what it belongs to; that may arrive later. The same identifier with the same file is kept once.
+ * @throws AppError not_found · forbidden (evidence is a manager's) · invalid · conflict
+ */
+export async function storeAttachment(
+  tx: Tx,
+  actor: Actor,
+  siteRef: string,
+  query: AttachmentQuery,
+  file: ReceivedFile,
+  now: Date,
+): Promise<Recorded<AttachmentItem>> {
+  const site = found(await visibleSite(tx, siteRef), 'site');
+  if (query.subject === 'connector_pair' && !mayUse(actor.role, 'connector_evidence.record'))
+    throw new AppError('forbidden', {
+      message: `The role ${actor.role} does not record evidence for connectors. Ask a manager.`,
+    });
+  const string =
+    query.string === undefined
+      ? null
+      : found(await lockString(tx, site.id, query.string), 'string at this site');
+  const clock = clockFault(query.at, now);
+  refuseFaults(clock ? [{ ...clock, field: 'query.at' }] : []);
+  const sha256 = createHash('sha256').update(file.data).digest();
+  const made = await insertAttachment(tx, {
+    ref: query.ref,
+    organisationId: site.organisationId,
+    siteId: site.id,
+    stringId: string?.id ?? null,
+    subject: query.subject,
+    subjectRef: query.subjectRef ?? null,
+    name: query.name,
+    note: query.note,
+    placeKept: query.keepPlace === 'yes' && file.mediaType === 'image/jpeg',
+    personId: actor.personId,
+    at: query.at,
+    sha256,
+    ...file,
+  });
+  const stored = await attachmentByRef(tx, query.ref);
+  if (
+    !stored ||
+    (!made &&
+      !(
+        stored.siteId === site.id &&
+        stored.personId === actor.personId &&
+        stored.subject === query.subject &&
+        stored.subjectRef === (query.subjectRef ?? null) &&
+        stored.sha256.equals(sha256)
+      ))
+  )
+    throw refTaken();
+  if (made) await tellSiteChanged(tx, site.id);
+  return { record: attachmentOut(stored), made };
+}
