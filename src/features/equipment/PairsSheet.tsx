@@ -1,0 +1,150 @@
+import { useState } from 'react';
+import { Button } from '../../components/ui/Button';
+import { Dialog } from '../../components/ui/Dialog';
+import { Notice } from '../../components/ui/Notice';
+import { Sheet } from '../../components/ui/Sheet';
+import { Table } from '../../components/ui/Table';
+import { Tag } from '../../components/ui/Tag';
+import { CONNECTOR_CLAUSE } from '../../domain/equipment/connectors';
+import { fullTime } from '../../drawings/times';
+import { ApiError, api } from '../../lib/api';
+import type { ConnectorItem, PairItem } from '../../schemas/api/equipment';
+import { paths } from '../../schemas/paths';
+import { PairForm } from './PairForm';
+
+interface Props {
+  pairs: readonly PairItem[];
+  connectors: readonly ConnectorItem[];
+  /** A manager. */
+  mayRecord: boolean;
+  timeZone: string;
+}
+
+/** Which different connector types a document says may be mated: recorded by a manager, ended but never erased. */
+export function PairsSheet({ pairs, connectors, mayRecord, timeZone }: Props) {
+  const [recording, setRecording] = useState(false);
+  const [ending, setEnding] = useState<PairItem | null>(null);
+  const [fault, setFault] = useState<string | null>(null);
+  const end = async (pair: PairItem) => {
+    try {
+      await api(paths.api.connectorPair(pair.id), { method: 'DELETE' });
+      window.location.reload();
+    } catch (error) {
+      if (!(error instanceof ApiError)) throw error;
+      setFault(error.message);
+    }
+  };
+  return (
+    <Sheet
+      flush
+      title="Documented pairs of different connectors"
+      id="pairs"
+      className="mt-6"
+      aside={CONNECTOR_CLAUSE}
+    >
+      <p className="mb-3 max-w-[760px] text-ink-2">
+        Where a string mates two different types and no pair stands here, its install check fails as a fire
+        risk.
+      </p>
+      <Table
+        caption="Pairs of connector types that are documented as intermatable"
+        rows={pairs}
+        rowKey={(p) => p.id}
+        columns={[
+          {
+            key: 'pair',
+            label: 'Pair',
+            cell: (p) => (
+              <>
+                <span className="font-medium">
+                  {p.first.name} with {p.second.name}
+                </span>
+                {p.endedAt && (
+                  <span className="ml-2">
+                    <Tag tone="slate">Ended {fullTime(p.endedAt, timeZone)}</Tag>
+                  </span>
+                )}
+                <span className="block text-sm text-ink-2 md:hidden">{p.evidence}</span>
+              </>
+            ),
+          },
+          {
+            key: 'evidence',
+            label: 'Evidence',
+            from: 'md',
+            cell: (p) => (
+              <>
+                {p.evidence}
+                {p.files.map((f) => (
+                  <a key={f.id} href={paths.api.attachment(f.id)} className="link block text-sm">
+                    {f.name}
+                  </a>
+                ))}
+              </>
+            ),
+          },
+          {
+            key: 'by',
+            label: 'Recorded by',
+            from: 'sm',
+            cell: (p) => (
+              <>
+                {p.recordedBy}
+                <span className="block text-sm text-ink-2">{fullTime(p.recordedAt, timeZone)}</span>
+              </>
+            ),
+          },
+          {
+            key: 'end',
+            label: '',
+            className: 'text-right',
+            cell: (p) =>
+              mayRecord &&
+              !p.endedAt && (
+                <Button className="!px-3 !text-sm" onClick={() => setEnding(p)}>
+                  End
+                </Button>
+              ),
+          },
+        ]}
+        empty={
+          <div className="py-3">
+            <Notice kind="empty" title="No pair is documented">
+              Only identical connectors may be mated.
+            </Notice>
+          </div>
+        }
+      />
+      {mayRecord ? (
+        <Button className="mt-4" onClick={() => setRecording(true)}>
+          Record a documented pair
+        </Button>
+      ) : (
+        <p className="mt-3 text-sm text-ink-2">A manager records pairs and ends them.</p>
+      )}
+      <Dialog open={recording} title="Record a documented pair" onClose={() => setRecording(false)}>
+        <PairForm connectors={connectors} onDone={() => window.location.reload()} />
+      </Dialog>
+      <Dialog open={ending !== null} title="End this pair" onClose={() => setEnding(null)}>
+        {ending && (
+          <>
+            <p className="mb-4">
+              From now on {ending.first.name} and {ending.second.name} count as not documented: where they are
+              mated, design and install checks name a fire risk. The record stays to be seen.
+            </p>
+            {fault && (
+              <div className="mb-4">
+                <Notice kind="failed" title="Not ended">
+                  {fault}
+                </Notice>
+              </div>
+            )}
+            <Button weight="primary" onClick={() => void end(ending)}>
+              End the pair
+            </Button>
+          </>
+        )}
+      </Dialog>
+    </Sheet>
+  );
+}

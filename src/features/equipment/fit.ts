@@ -1,0 +1,63 @@
+import type { Entry } from '../../domain/equipment/fields';
+import { moduleSheetOf } from '../../domain/equipment/module-fields';
+import type { ModuleSheet } from '../../domain/equipment/module-type';
+import { moduleFromDatasheet, type FittedModule } from '../../domain/photovoltaics/module/datasheet';
+import { number } from '../../drawings/numbers';
+
+export interface FitLine {
+  label: string;
+  printed: string;
+  fitted: string;
+  /** (fitted − printed)/printed */
+  off: number;
+  /** Whether the fit was asked to meet it, or the figure only follows. */
+  role: 'met exactly' | 'fitted' | 'follows';
+}
+export interface ModuleFit {
+  sheet: ModuleSheet;
+  fitted: FittedModule;
+  lines: FitLine[];
+  /** One sentence: how well the curve meets the sheet. */
+  words: string;
+}
+
+const WORDS = {
+  good: 'One module can have all of these values: the curve meets the sheet.',
+  fair: 'The curve comes close to the sheet; the small differences are usual for rounded figures.',
+  poor: 'No single module has all of these values: check the marked ones against the sheet.',
+} as const;
+
+/** The curve that a whole datasheet gives, and how it differs from each printed figure. */
+export function fitOf(entry: Entry): ModuleFit {
+  const sheet = moduleSheetOf(entry);
+  const fitted = moduleFromDatasheet(sheet);
+  const { fit } = fitted;
+  const line = (
+    label: string,
+    printed: number,
+    off: number,
+    role: FitLine['role'],
+    unit: string,
+    digits: number,
+  ): FitLine => ({
+    label,
+    printed: `${number(printed, digits)} ${unit}`,
+    fitted: `${number(printed + off * Math.abs(printed), digits)} ${unit}`,
+    off,
+    role,
+  });
+  return {
+    sheet,
+    fitted,
+    words: WORDS[fit.quality],
+    lines: [
+      line('voc', sheet.vocRef, fit.voc, 'met exactly', 'V', 2),
+      line('isc', sheet.iscRef, fit.isc, 'met exactly', 'A', 2),
+      line('vmp', sheet.vmpRef, fit.vmp, 'fitted', 'V', 2),
+      line('imp', sheet.impRef, fit.imp, 'fitted', 'A', 2),
+      line('pmp', sheet.vmpRef * sheet.impRef, fit.pmp, 'follows', 'W', 1),
+      line('voc per K', 100 * sheet.betaVoc, fit.betaVoc, 'fitted', '%', 3),
+      line('pmp per K', 100 * sheet.gammaPmp, fit.gammaPmp, 'follows', '%', 3),
+    ],
+  };
+}

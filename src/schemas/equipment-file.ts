@@ -1,0 +1,155 @@
+import type { EquipmentFamily } from '../domain/equipment/families';
+import { headerOf, type Entry, type EntryValue, type Field } from '../domain/equipment/fields';
+import { DEFAULTS, FIELDS } from '../domain/equipment/plausibility';
+import type { ImportFault } from './api/equipment';
+import { readValue, typedValue } from './equipment-entry';
+
+/** A table of types as a file has it: which column is which field, and what each cell says. */
+
+const plain = (text: string): string =>
+  text
+    .toLocaleLowerCase('en')
+    .replace(/\(.*\)/g, '')
+    .replace(/[^a-z0-9]+/g, '');
+const unitIn = (header: string): string | null => /\(([^)]*)\)\s*$/.exec(header)?.[1]?.trim() ?? null;
+const sameUnit = (a: string, b: string): boolean =>
+  a.replace(/\s|°/g, '').toLocaleLowerCase('en') === b.replace(/\s|°/g, '').toLocaleLowerCase('en');
+
+/** Columns that a download has and that no import needs. */
+const OURS_ALONE = new Set(['archived', 'strings', 'sites']);
+
+export interface ReadHeader {
+  /** Field of each column; null: none of ours. */
+  fields: readonly (Field | null)[];
+  faults: ImportFault[];
+  ignored: string[];
+}
+
+/** Which column is which field, by its label, its short name or the name in a download. */
+export function readHeader(family: EquipmentFamily, header: readonly string[]): ReadHeader {
+  const fields: (Field | null)[] = [];
+  const faults: ImportFault[] = [];
+  const ignored: string[] = [];
+  for (const title of header) {
+    const name = plain(title);
+    const field = FIELDS[family].find((f) => [plain(f.label), plain(f.key), plain(f.column)].includes(name));
+    const unit = unitIn(title);
+    if (field && fields.includes(field))
+      faults.push({
+        column: title,
+        typed: title,
+        why: 'Two columns are the same field.',
+        remedy: 'Delete one.',
+      });
+    else if (field?.kind === 'number' && unit !== null && !sameUnit(unit, field.unit))
+      faults.push({
+        column: title,
+        typed: title,
+        why: `The column is in ${unit || 'no unit'}.`,
+        remedy: field.unit
+          ? `This field takes ${field.unit}: convert the column, and call it "${headerOf(field)}".`
+          : `This field has no unit: call the column "${headerOf(field)}".`,
+      });
+    if (!field && title.trim() !== '' && !OURS_ALONE.has(name)) ignored.push(title.trim());
+    fields.push(field ?? null);
+  }
+  if (!fields.some((f) => f?.key === 'name'))
+    faults.push({
+      column: 'Name',
+      typed: '',
+      why: 'No column is called "Name".',
+      remedy: 'Put the names of the columns into the first row; a download of the list shows them.',
+    });
+  return { fields, faults, ignored };
+}
+
+/** A sentence of what is wrong as two: why, and what to do. */
+function inTwo(label: string, fault: string): { why: string; remedy: string } {
+  const bare = fault.startsWith(`${label}: `) ? fault.slice(label.length + 2) : fault;
+  const cut = /^(.+?[.!?]) (?=[A-Z])/.exec(bare);
+  const capital = (text: string) => text.charAt(0).toLocaleUpperCase('en') + text.slice(1);
+  return cut?.[1]
+    ? { why: capital(cut[1]), remedy: bare.slice(cut[0].length) }
+    : { why: 'It can’t be read as it is.', remedy: capital(bare) };
+}
+
+export interface ReadRow {
+  entry: Record<string, EntryValue>;
+  faults: ImportFault[];
+}
+
+/** A spreadsheet guards text that looks like a formula with an apostrophe: it is no part of the text. */
+const unguarded = (cell: string): string => cell.replace(/^'(?=[=+\-@])/, '').trim();
+
+/**
+ * One row by its fields. What the file has no column for keeps what the entry of that name has, or what a new form
+ * begins with.
+ */
+export function readRow(
+  family: EquipmentFamily,
+  header: ReadHeader,
+  cells: readonly string[],
+  around: { before: Entry | undefined; connectorByName: ReadonlyMap<string, string> },
+): ReadRow {
+  const entry: Record<string, EntryValue> = {};
+  const faults: ImportFault[] = [];
+  for (const field of FIELDS[family]) {
+    const at = header.fields.indexOf(field);
+    if (at < 0) {
+      const kept = around.before ? around.before[field.key] : DEFAULTS[family][field.key];
+      if (kept !== undefined) entry[field.key] = kept;
+      else
+        faults.push({
+          column: field.label,
+          typed: '',
+          why: 'The file has no such column.',
+          remedy: `Add a column "${headerOf(field)}".`,
+        });
+      continue;
+    }
+    const typed = unguarded(cells[at] ?? '');
+    const fault = (why: string, remedy: string) =>
+      faults.push({ column: headerOf(field), typed, why, remedy });
+    if (field.kind === 'connector' && typed !== '') {
+      const ref = around.connectorByName.get(typed.toLocaleLowerCase('en'));
+      if (ref) entry[field.key] = ref;
+      else
+        fault(
+          `No connector type is called "${typed}".`,
+          'Enter the connector type first, or correct the name.',
+        );
+      continue;
+    }
+    if (typed === '' && field.kind === 'number' && !field.emptyMeans) {
+      fault(
+        'The cell is empty.',
+        `Type a number from ${field.min} to ${field.max}${field.unit ? ` ${field.unit}` : ''}.`.replaceAll(
+          '-',
+          '−',
+        ),
+      );
+      continue;
+    }
+    const choice =
+      field.kind === 'choice'
+        ? field.options.find((o) => [plain(o.value), plain(o.label)].includes(plain(typed)))?.value
+        : undefined;
+    const read = readValue(field, choice ?? typed);
+    if ('fault' in read) {
+      const { why, remedy } = inTwo(field.label, read.fault);
+      fault(why, remedy);
+    } else entry[field.key] = read.value;
+  }
+  return { entry, faults };
+}
+
+/** A kept value as a file shows it: choices by their words, connectors by their names. */
+export function writtenValue(
+  field: Field,
+  value: EntryValue | undefined,
+  connectorNames: ReadonlyMap<string, string>,
+): string {
+  if (field.kind === 'choice') return field.options.find((o) => o.value === value)?.label ?? '';
+  if (field.kind === 'connector') return typeof value === 'string' ? (connectorNames.get(value) ?? '') : '';
+  return typedValue(field, value);
+}
