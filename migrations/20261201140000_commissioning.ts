@@ -29,7 +29,7 @@ const APP_WRITES: Record<string, string> = {
   string: 'insert, update, delete',
   slot: 'insert, update, delete',
   unit: 'insert, update',
-  placement: 'insert, update',
+  placement: 'insert, update, delete',
   string_sign_off: 'insert',
   accepted_gap: 'insert',
   attachment: 'insert',

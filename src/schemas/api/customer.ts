@@ -91,6 +91,8 @@ export const customerSite = z.object({
       madeBy: z.string(),
     })
     .nullable(),
+  /** Handover packs, newest first. */
+  papers: z.array(z.object({ ref: id, version: z.int(), madeAt: time, pdfBytes: z.int() })),
 });
 export type CustomerSite = z.infer<typeof customerSite>;
 

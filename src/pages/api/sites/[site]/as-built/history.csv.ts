@@ -1,0 +1,28 @@
+import { changeText, historyTitle, sourceWords } from '../../../../../features/as-built/history-words';
+import { historyView } from '../../../../../schemas/api/as-built';
+import { siteParams } from '../../../../../schemas/api/site';
+import { endpoint } from '../../../../../server/http/endpoint';
+import { csvResponse } from '../../../../../server/reports/csv';
+import { historyPage } from '../../../../../server/services/as-built-history';
+
+/** More entries than a site gathers in decades. */
+const ALL = 100_000;
+
+export const GET = endpoint(
+  { permission: 'telemetry.export', params: siteParams, query: historyView },
+  async ({ tx, actor, params, query }) => {
+    const page = await historyPage(tx, actor, params.site, { ...query, limit: ALL }, new Date());
+    return csvResponse(
+      `as-built-history-${page.site.name}`,
+      [
+        { header: 'at (UTC)', value: (i) => new Date(i.at) },
+        { header: 'person', value: (i) => i.person },
+        { header: 'what', value: (i) => historyTitle(i) },
+        { header: 'change', value: (i) => changeText(i) },
+        { header: 'reason', value: (i) => i.reason },
+        { header: 'how', value: (i) => sourceWords(i.source) },
+      ],
+      page.items,
+    );
+  },
+);

@@ -1,0 +1,79 @@
+import type { z } from 'zod';
+import type { Actor } from '../../domain/access/permissions';
+import { countUp } from '../../domain/commissioning/as-built/count-up';
+import type { AsBuilt, PartAdded, partAdd, placementsBody } from '../../schemas/api/as-built';
+import type { Tx } from '../db/transaction';
+import { found } from '../errors';
+import { asBuiltParts } from '../queries/as-built';
+import { visibleSite } from '../queries/visible-site';
+import { addPart } from './edit-as-built';
+import { addStrings, setSlotFacts } from './edit-as-built-strings';
+import { makeLoggerToken, newToken } from './logger-token';
+import { placeUnits, type Placed } from './place-units';
+
+/** What the as-built's forms ask for, put together from the services. */
+
+/** @throws AppError not_found */
+export async function asBuiltPage(tx: Tx, siteRef: string, at: Date): Promise<AsBuilt> {
+  const site = found(await visibleSite(tx, siteRef), 'site');
+  return { at: at.toISOString(), ...found(await asBuiltParts(tx, site.id), 'site') };
+}
+
+/**
+ * Adds a part, or several strings alike. A new logger gets its token with it.
+ * @throws AppError as addPart and addStrings do, with fields `values.KEY`
+ */
+export async function addFromForm(
+  tx: Tx,
+  actor: Actor,
+  siteRef: string,
+  add: z.output<typeof partAdd>,
+  address: string | null,
+): Promise<PartAdded> {
+  const site = found(await visibleSite(tx, siteRef), 'site');
+  const how = { reason: add.reason, source: 'forms', address };
+  if (add.kind === 'string') {
+    const names = countUp(String(add.values.name ?? '').trim(), add.alike);
+    const made = await addStrings(
+      tx,
+      actor,
+      site.id,
+      names.map((name) => ({ ...add.values, name })),
+      how,
+      () => 'values.',
+    );
+    return { ids: made.map((m) => m.ref), token: null };
+  }
+  const { kind, values } = add;
+  const made = await addPart(tx, actor, site.id, { kind, values }, how);
+  if (kind !== 'logger') return { ids: [made.ref], token: null };
+  const token = newToken();
+  await makeLoggerToken(tx, actor, site.id, made.ref, how, token);
+  return { ids: [made.ref], token };
+}
+
+/**
+ * Units into slots and what is written down of the slots, in one transaction.
+ * @throws AppError as placeUnits and setSlotFacts do
+ */
+export async function saveSlots(
+  tx: Tx,
+  actor: Actor,
+  siteRef: string,
+  body: z.output<typeof placementsBody>,
+  at: Date,
+  address: string | null,
+): Promise<Placed> {
+  const site = found(await visibleSite(tx, siteRef), 'site');
+  const { reason } = body;
+  const placed = await placeUnits(tx, actor, site.id, body.changes, {
+    at,
+    reason,
+    source: 'forms',
+    move: body.move,
+    retype: body.retype,
+    address,
+  });
+  await setSlotFacts(tx, actor, site.id, body.slots, { reason, source: 'forms', address });
+  return placed;
+}
