@@ -22,7 +22,14 @@ export const FEATURES = [
   'customer',
   'readings',
   'methods',
+  'walk',
+  'membership',
+  'handover',
+  'letters',
   'capture',
+  'import',
+  'serials',
+  'roof',
 ] as const;
 const AREAS = FEATURES.map((name) => `src/features/${name}`);
 

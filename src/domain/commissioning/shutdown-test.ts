@@ -1,4 +1,15 @@
 import { OUTSIDE_ARRAY_LIMIT_V } from '../verdicts/conductors';
+import type { RuleSet } from '../verdicts/context';
+
+/** NEC 690.12(B)(2), 2017 and later editions: inside the array boundary, between two conductors or to earth. */
+export const INSIDE_ARRAY_LIMIT_V = 80;
+
+/**
+ * V that a home run may carry after the rule set's time, any two conductors or conductor to earth. Inside the array
+ * the 2014 edition sets no limit; 80 V are a yardstick there too.
+ */
+export const homeRunLimit = (homeRunLeavesArray: boolean): number =>
+  homeRunLeavesArray ? OUTSIDE_ARRAY_LIMIT_V : INSIDE_ARRAY_LIMIT_V;
 
 /**
  * What a shutdown test has shown. Only a rated instrument at the home run's inverter end can witness a pass: inverters
@@ -29,10 +40,17 @@ export interface TestedString {
   notShuttingDown: number;
   /** A string-level contradiction: its conductors stay up while its units claim shutdown. */
   conductorsStayUp: boolean;
+  /**
+   * Voltage of an input that it has alone, so long after the command that the inverter's capacitors explain it no
+   * more; null or absent: nothing such stood there.
+   */
+  conductorsLive?: { voltageV: number; afterS: number } | null;
+  /** The inverter's own measurement of such an input fell; for units that tell nothing. */
+  inputFell?: { fromV: number; toV: number; afterS: number } | null;
 }
 
 export interface ShutdownTestInput {
-  ruleSet: 'rapid_shutdown_30s' | 'rapid_shutdown_10s' | 'hazard_control' | 'none';
+  ruleSet: RuleSet;
   timeLimitS: number;
   light: 'bright' | 'dull' | 'snow' | 'night';
   strings: readonly TestedString[];
@@ -60,7 +78,13 @@ export interface ShutdownTestFinding {
   cautions: string[];
 }
 
-const WORST: readonly TestResult[] = ['failed', 'not_witnessed', 'consistent', 'passed'];
+export const TEST_CAUTIONS = [
+  'Shutdown is not isolation: each module and its leads to its unit stay at module voltage.',
+  'A result speaks of the day of the test. Local code and the authority having jurisdiction come first.',
+] as const;
+
+/** The gravest first: the whole of a test is as good as its worst string. */
+export const WORST: readonly TestResult[] = ['failed', 'not_witnessed', 'consistent', 'passed'];
 
 /**
  * Result of each string and of the whole: the worst of its strings. `passed` needs a measured voltage before the
@@ -88,26 +112,26 @@ export function judgeShutdownTest(input: ShutdownTestInput): ShutdownTestFinding
   if (input.light === 'night' || input.light === 'snow')
     missing.push('Test again in light that powers the units: without it a dead string proves nothing.');
   const failed = strings.filter((s) => s.result === 'failed');
-  const source =
-    input.ruleSet === 'rapid_shutdown_10s'
-      ? 'NEC 690.12, 2014 edition: 30 V within 10 s'
-      : input.ruleSet === 'rapid_shutdown_30s'
-        ? 'NEC 690.12(B)(1), 2017 and later editions: 30 V within 30 s'
-        : 'no time limit applies to this site; 30 V within 30 s taken as a yardstick';
   return {
     result,
-    headline: headline(result, failed, strings.length),
+    headline: testHeadline(result, failed, strings.length),
     strings,
-    limits: { afterS: input.timeLimitS, voltage: OUTSIDE_ARRAY_LIMIT_V, source },
+    limits: { afterS: input.timeLimitS, voltage: OUTSIDE_ARRAY_LIMIT_V, source: limitSource(input.ruleSet) },
     missing,
-    cautions: [
-      'Shutdown is not isolation: each module and its leads to its unit stay at module voltage.',
-      'A result speaks of the day of the test. Local code and the authority having jurisdiction come first.',
-    ],
+    cautions: [...TEST_CAUTIONS],
   };
 }
 
-function headline(result: TestResult, failed: readonly StringTestResult[], all: number): string {
+/** Where a rule set's limits come from. */
+export const limitSource = (ruleSet: RuleSet): string =>
+  ruleSet === 'rapid_shutdown_10s'
+    ? 'NEC 690.12, 2014 edition: 30 V within 10 s'
+    : ruleSet === 'rapid_shutdown_30s'
+      ? 'NEC 690.12(B)(1), 2017 and later editions: 30 V within 30 s'
+      : 'no time limit applies to this site; 30 V within 30 s taken as a yardstick';
+
+/** The finding of a whole test in one line. */
+export function testHeadline(result: TestResult, failed: readonly { name: string }[], all: number): string {
   if (result === 'failed') {
     const names = failed.map((s) => s.name);
     return `${names.length} of ${all} strings did not shut down as required: ${names.slice(0, 4).join(', ')}${names.length > 4 ? ` and ${names.length - 4} more` : ''}`;
@@ -118,8 +142,13 @@ function headline(result: TestResult, failed: readonly StringTestResult[], all: 
   return 'The shutdown was not witnessed';
 }
 
-function judgeString(s: TestedString, input: ShutdownTestInput): StringTestResult {
+/** Result of one string in one round of a test: see `judgeShutdownTest`. */
+export function judgeString(
+  s: TestedString,
+  input: Pick<ShutdownTestInput, 'timeLimitS' | 'light'>,
+): StringTestResult {
   const { timeLimitS, light } = input;
+  const limitV = homeRunLimit(s.homeRunLeavesArray);
   const slowest = s.followed.reduce<[number, number] | null>(
     (worst, f) => (worst === null || f[1] > worst[1] ? [f[0], f[1]] : worst),
     null,
@@ -128,7 +157,7 @@ function judgeString(s: TestedString, input: ShutdownTestInput): StringTestResul
     [r.positiveToNegativeV, r.positiveToEarthV, r.negativeToEarthV].flatMap((v) =>
       v === null ? [] : [Math.abs(v)],
     );
-  const usable = s.readings.filter((r) => r.rated && r.atInverterEnd);
+  const usable = s.readings.filter((r) => r.rated && r.atInverterEnd).toSorted((a, b) => a.afterS - b.afterS);
   const inTime = usable.filter((r) => r.afterS <= timeLimitS);
   const highestV = inTime.length === 0 ? null : Math.max(0, ...inTime.slice(-1).flatMap(volts));
   const made = (result: TestResult, words: string): StringTestResult => ({
@@ -138,20 +167,27 @@ function judgeString(s: TestedString, input: ShutdownTestInput): StringTestResul
     highestV,
     slowest,
   });
-  const tooHigh = usable
-    .filter((r) => r.afterS >= timeLimitS)
-    .find((r) => volts(r).some((v) => v > OUTSIDE_ARRAY_LIMIT_V));
-  if (tooHigh !== undefined && s.homeRunLeavesArray)
+  const tooHigh = usable.filter((r) => r.afterS >= timeLimitS).find((r) => volts(r).some((v) => v > limitV));
+  if (tooHigh !== undefined)
     return made(
       'failed',
-      `${Math.max(...volts(tooHigh)).toFixed(0)} V stood on the home run ${tooHigh.afterS.toFixed(0)} s after the command; at most ${OUTSIDE_ARRAY_LIMIT_V} V are allowed after ${timeLimitS} s.`,
+      `${Math.max(...volts(tooHigh)).toFixed(0)} V stood on the home run ${tooHigh.afterS.toFixed(0)} s after the command; at most ${limitV} V are allowed after ${timeLimitS} s.`,
     );
   if (s.notShuttingDown > 0)
     return made('failed', `${s.notShuttingDown} of ${s.units} units passed on past ${timeLimitS} s.`);
+  if (s.conductorsLive)
+    return made(
+      'failed',
+      `${s.conductorsLive.voltageV.toFixed(0)} V stood at its input ${s.conductorsLive.afterS.toFixed(0)} s after the command, longer than capacitors hold it up.`,
+    );
+  if (slowest !== null && slowest[0] >= timeLimitS)
+    return made('failed', `A unit took at least ${Math.floor(slowest[0])} s; ${timeLimitS} s are allowed.`);
   const lit = light === 'bright' || light === 'dull';
-  const low = inTime.find((r) => volts(r).length === 3 && volts(r).every((v) => v <= OUTSIDE_ARRAY_LIMIT_V));
-  // a later look must not contradict the first
-  if (low !== undefined && lit && s.beforeV !== null && Math.abs(s.beforeV) > OUTSIDE_ARRAY_LIMIT_V)
+  const complete = inTime.filter((r) => volts(r).length === 3);
+  const low = complete.at(-1);
+  const stayedLow =
+    low !== undefined && usable.every((r) => r.afterS < low.afterS || volts(r).every((v) => v <= limitV));
+  if (low !== undefined && stayedLow && lit && s.beforeV !== null && Math.abs(s.beforeV) > limitV)
     return made(
       'passed',
       `From ${Math.abs(s.beforeV).toFixed(0)} V to ${Math.max(...volts(low)).toFixed(1)} V at most, ${low.afterS.toFixed(0)} s after the command, by a rated instrument.`,
@@ -163,15 +199,18 @@ function judgeString(s: TestedString, input: ShutdownTestInput): StringTestResul
     );
   if (!lit)
     return made('not_witnessed', 'Too little light to power the units: a dead string proves nothing.');
-  if (s.followed.length === s.units && s.units > 0 && slowest !== null && slowest[0] < timeLimitS)
+  if (s.followed.length === s.units && s.units > 0 && slowest !== null)
     return made(
       'consistent',
       slowest[1] <= timeLimitS
         ? `All ${s.units} units reported shutdown within ${Math.ceil(slowest[1])} s.`
         : `All ${s.units} units reported shutdown; the slowest took between ${Math.floor(slowest[0])} and ${Math.ceil(slowest[1])} s, so the limit of ${timeLimitS} s can not be judged from reports.`,
     );
-  if (s.followed.length > 0 && slowest !== null && slowest[0] >= timeLimitS)
-    return made('failed', `A unit took at least ${Math.floor(slowest[0])} s; ${timeLimitS} s are allowed.`);
+  if (s.inputFell && s.followed.length === 0)
+    return made(
+      'consistent',
+      `The inverter's own measurement fell from ${s.inputFell.fromV.toFixed(0)} V to ${s.inputFell.toV.toFixed(0)} V within ${Math.ceil(s.inputFell.afterS)} s; it can not read a few volts.`,
+    );
   return made(
     'not_witnessed',
     s.followed.length === 0

@@ -22,14 +22,14 @@ let limits: Limits | undefined;
 const signInLimits = (): Limits =>
   (limits ??= { account: limiter('account', 10, 900), address: limiter('address', 50, 900) });
 
-async function take(from: RateLimiterPostgres, key: string): Promise<void> {
+async function take(from: RateLimiterPostgres, key: string, what = 'sign in'): Promise<void> {
   try {
     await from.consume(key.slice(0, 200));
   } catch (blocked) {
     if (!(blocked instanceof RateLimiterRes)) throw blocked;
     const seconds = Math.max(1, Math.ceil(blocked.msBeforeNext / 1000));
     throw new AppError('too_many', {
-      message: `Too many tries to sign in. Wait ${seconds > 90 ? `${Math.ceil(seconds / 60)} minutes` : `${seconds} seconds`}, then try again.`,
+      message: `Too many tries to ${what}. Wait ${seconds > 90 ? `${Math.ceil(seconds / 60)} minutes` : `${seconds} seconds`}, then try again.`,
       retryAfterS: seconds,
     });
   }
@@ -44,4 +44,17 @@ export async function takeSignInTry(email: string, address: string): Promise<voi
 /** A right password clears the account's count; the address's count stays. */
 export async function forgiveAccount(email: string): Promise<void> {
   await signInLimits().account.delete(email.trim().toLowerCase());
+}
+
+let signing: RateLimiterPostgres | undefined;
+/** Wrong passwords when signing: 10 of one person in 15 minutes. */
+const signingLimit = (): RateLimiterPostgres => (signing ??= limiter('signing', 10, 900));
+
+/** Counts a try to sign something with the password; throws `too_many` with the wait. */
+export const takeSigningTry = (personId: number): Promise<void> =>
+  take(signingLimit(), String(personId), 'sign with your password');
+
+/** A right password clears the count. */
+export async function forgiveSigner(personId: number): Promise<void> {
+  await signingLimit().delete(String(personId));
 }
