@@ -34,6 +34,8 @@ export const ROUTES: readonly Route[] = [
   get('shutdown.astro', 'shutdown.read', 'nothing', () => '/shutdown'),
   get('status.astro', 'status.read', 'nothing', () => '/status'),
   get('try-a-reading.astro', 'reading.try', 'nothing', () => '/try-a-reading'),
+  get('capture/index.astro', 'public', 'nothing', () => '/capture'),
+  get('capture/[site].astro', 'checks.write', 'site', (t) => `/capture/${t.site}`),
   get('methods.astro', 'methods.read', 'nothing', () => '/methods'),
   get('commissioning/index.astro', 'roll_call.read', 'nothing', () => '/commissioning'),
   get(
@@ -41,6 +43,12 @@ export const ROUTES: readonly Route[] = [
     'roll_call.read',
     'site',
     (t) => `/commissioning/${t.site}/roll-call`,
+  ),
+  get(
+    'commissioning/[site]/import.astro',
+    'as_built.write',
+    'site',
+    (t) => `/commissioning/${t.site}/import`,
   ),
   get('sites/[site]/index.astro', 'site.read', 'site', (t) => `/sites/${t.site}`),
   get(
@@ -144,4 +152,17 @@ export const ROUTES: readonly Route[] = [
     (t) => `/api/strings/${t.string}/units.csv`,
   ),
   get('api/my-site/[site].ts', 'customer_page.read', 'site', (t) => `/api/my-site/${t.site}`),
+  {
+    file: 'api/sites/[site]/as-built/import.ts',
+    method: 'POST',
+    permission: 'as_built.write',
+    of: 'site',
+    path: (t) => `/api/sites/${t.site}/as-built/import`,
+    body: {
+      mode: 'check',
+      table: { columns: ['string', 'position', 'serial'], lines: [2], rows: [['A1', '1', '']] },
+      choices: { decimalMark: null, fillDown: false, meanings: {}, newStrings: null },
+    },
+    served: [200],
+  },
 ];

@@ -2,7 +2,7 @@ import fc from 'fast-check';
 import Papa from 'papaparse';
 import { describe, expect, it } from 'vitest';
 import { decode } from './decode';
-import { parseText, separatorOf } from './parse';
+import { parseText, separatorOf, type Separator } from './parse';
 
 const utf16 = (text: string, big = false, mark = true): Uint8Array => {
   const units = [
@@ -86,7 +86,7 @@ describe('a text with separators', () => {
     fc.assert(
       fc.property(
         fc.array(fc.array(cell, { minLength: 3, maxLength: 3 }), { minLength: 1, maxLength: 10 }),
-        fc.constantFrom('\t', ';', ',') as fc.Arbitrary<'\t' | ';' | ','>,
+        fc.constantFrom<Separator>('\t', ';', ','),
         (rows, separator) => {
           const text = Papa.unparse(rows, { delimiter: separator, newline: '\r\n' });
           const filled = rows.filter((r) => r.some((c) => c.trim() !== ''));

@@ -160,8 +160,8 @@ export async function insertStrings(
        returning id, ref, name),
      slots as (
        insert into slot (site_id, string_id, position, module_type_id)
-       select :siteId, made.id, n, x.module_type from made join x on x.name = made.name
-         cross join lateral generate_series(1, x.slots) n order by x.n, n),
+       select :siteId, made.id, p, x.module_type from made join x on x.name = made.name
+         cross join lateral generate_series(1, x.slots) p order by x.n, p),
      served as (
        insert into transmitter_string (transmitter_id, string_id, site_id)
        select t, made.id, :siteId from made join x on x.name = made.name cross join lateral unnest(x.transmitters) t)

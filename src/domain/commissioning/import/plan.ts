@@ -12,11 +12,11 @@ export interface StandingSlot {
   roofPlace: string;
 }
 
-/** A unit that the organisation knows; `at` where it sits now, if anywhere. */
+/** A unit that the organisation knows; `at` where it sits now, if anywhere. `site` null: one that may not be seen. */
 export interface KnownUnit {
   serial: string;
   unitType: string;
-  at: { site: string; thisSite: boolean; string: string; position: number } | null;
+  at: { site: string | null; thisSite: boolean; string: string; position: number } | null;
 }
 
 export type Change =
@@ -47,8 +47,8 @@ export interface ImportPlan {
 }
 
 const key = (string: string, position: number): string => `${string}\u0000${position}`;
-/** The database keeps metres in 32 bits. */
-const sameMetres = (a: number | null, b: number): boolean => a !== null && Math.fround(a) === Math.fround(b);
+/** The database keeps metres in single precision: equal to a tenth of a millimetre. */
+const sameMetres = (a: number | null, b: number): boolean => a !== null && Math.abs(a - b) < 1e-4;
 
 /**
  * Compares. A serial of this site that sits elsewhere moves, if its old slot is given to another unit by the same file
@@ -120,23 +120,19 @@ function unitFault(row: ReadRow, unit: KnownUnit, stringType: string | undefined
     return {
       ...fault,
       code: 'serial_elsewhere',
-      message: `${row.serial} sits on ${unit.at.site}, ${unit.at.string}, position ${unit.at.position}`,
+      message:
+        unit.at.site === null
+          ? `${row.serial} sits on another site, which you don't see`
+          : `${row.serial} sits on ${unit.at.site}, ${unit.at.string}, position ${unit.at.position}`,
       remedy: 'Take it out of the as-built there first, or read the label again.',
     };
-  if (row.unitType !== null && row.unitType !== unit.unitType)
+  if (stringType !== undefined && stringType !== unit.unitType)
     return {
       ...fault,
       code: 'serial_type',
-      message: `${row.serial} is known as ${unit.unitType}, the file says ${row.unitType}`,
-      remedy: 'Correct the unit type in the file, or read the label again.',
-    };
-  if (row.unitType === null && stringType !== undefined && stringType !== unit.unitType)
-    return {
-      ...fault,
-      code: 'unit_types_mixed',
-      message: `${row.serial} is known as ${unit.unitType}, and ${row.string} is a string of ${stringType}`,
-      remedy: 'Right only if the types may be mixed: the design check will look at it.',
-      weight: 'note',
+      message: `${row.serial} is on record as ${unit.unitType}, and ${row.string} is a string of ${stringType}`,
+      remedy:
+        'Read the label again. If the record is wrong, correct the unit type on the as-built page first.',
     };
   return undefined;
 }

@@ -61,8 +61,8 @@ function checkSerials(rows: readonly RawRow[], faults: Faults): void {
   }
 }
 
-/** Units of several types in one string: possible, and told. */
-function noteMixed(group: StringRows, typeOf: string | undefined, faults: Faults): void {
+/** A string is entered with one type of unit. */
+function checkTypes(group: StringRows, typeOf: string | undefined, faults: Faults): void {
   if (typeOf === undefined) return;
   const other = group.rows.find((r) => r.unitType && r.unitType !== typeOf);
   if (other?.unitType)
@@ -70,9 +70,11 @@ function noteMixed(group: StringRows, typeOf: string | undefined, faults: Faults
       other.line,
       'unitType',
       'unit_types_mixed',
-      `${group.name} is a string of ${typeOf}, and this unit is entered as ${other.unitType}`,
-      'Right only if the types may be mixed: the design check will look at it.',
-      { weight: 'note' },
+      `${group.name} is a string of ${typeOf}, the file has ${other.unitType} in it`,
+      group.known
+        ? 'If the file is right, change the unit type of the string on the as-built page first.'
+        : 'A string has one unit type. Correct the type, or the name of the string.',
+      { suggestion: typeOf },
     );
 }
 
@@ -97,7 +99,7 @@ export function readImport(
     checkKnown(group, faults);
     const made = group.known ? undefined : readNewString(group, choices, names, nextFree, faults);
     if (made) newStrings.push(made);
-    noteMixed(group, group.known?.unitType ?? made?.unitType, faults);
+    checkTypes(group, group.known?.unitType ?? made?.unitType, faults);
   }
   const rows = raw.flatMap((r): ReadRow[] =>
     r.string === undefined || r.position === undefined || r.serial === undefined

@@ -34,7 +34,7 @@ export interface RawRow {
 }
 
 export const POSITION_MAX = 63;
-const ROOF_MAX_M = 5000;
+const ROOF_MAX_M = 2000;
 const PLACE_MAX = 200;
 
 /** Collects faults of cells. */

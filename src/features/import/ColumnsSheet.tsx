@@ -1,0 +1,60 @@
+import { Choice } from '../../components/ui/Choice';
+import { Sheet } from '../../components/ui/Sheet';
+import {
+  COLUMN_LABELS,
+  IMPORT_COLUMNS,
+  REQUIRED_COLUMNS,
+  type ColumnMatch,
+  type ImportColumn,
+} from '../../domain/commissioning/import/columns';
+import type { FileFacts } from './desk';
+
+interface Props {
+  facts: FileFacts;
+  match: ColumnMatch;
+  onMatch: (column: ImportColumn, index: number | null) => void;
+}
+
+/** Which column of the file is which of ours, guessed and changeable, with what stands in it. */
+export function ColumnsSheet({ facts, match, onMatch }: Props) {
+  const used = new Set(Object.values(match));
+  const unused = facts.headers.filter((_, i) => !used.has(i));
+  return (
+    <Sheet
+      id="columns"
+      title="Columns"
+      aside={
+        unused.length > 0
+          ? `Not used: ${unused.slice(0, 6).join(', ')}${unused.length > 6 ? ' …' : ''}`
+          : undefined
+      }
+    >
+      <div className="grid gap-x-8 gap-y-3 md:grid-cols-2 xl:grid-cols-3">
+        {IMPORT_COLUMNS.map((column) => {
+          const index = match[column];
+          const needed = REQUIRED_COLUMNS.includes(column);
+          const values = index === null ? [] : facts.samples.map((row) => (row[index] ?? '').trim());
+          const shown = values.filter((v) => v !== '').map((v) => (v.length > 24 ? `${v.slice(0, 23)}…` : v));
+          return (
+            <Choice
+              key={column}
+              label={`${COLUMN_LABELS[column]}${needed ? ' (needed)' : ''}`}
+              value={index === null ? '' : String(index)}
+              options={[
+                { value: '', label: needed ? 'choose a column' : 'not in the file' },
+                ...facts.headers.map((header, i) => ({ value: String(i), label: header })),
+              ]}
+              onChange={(value) => onMatch(column, value === '' ? null : Number(value))}
+              error={
+                needed && index === null ? `Choose the column that holds the ${COLUMN_LABELS[column]}.` : null
+              }
+              hint={
+                index === null ? undefined : shown.length > 0 ? shown.join(' · ') : 'empty in the first rows'
+              }
+            />
+          );
+        })}
+      </div>
+    </Sheet>
+  );
+}

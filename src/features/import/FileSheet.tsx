@@ -1,0 +1,148 @@
+import { useId, useState, type DragEvent } from 'react';
+import { Button } from '../../components/ui/Button';
+import { Choice } from '../../components/ui/Choice';
+import { Notice } from '../../components/ui/Notice';
+import { Sheet } from '../../components/ui/Sheet';
+import { number } from '../../drawings/numbers';
+import { paths } from '../../schemas/paths';
+import { ENCODING_NAMES } from './decode';
+import type { FileFacts } from './desk';
+import { SEPARATOR_NAMES, SEPARATORS, type Separator } from './parse';
+
+interface Props {
+  site: string;
+  name: string | null;
+  facts: FileFacts | null;
+  /** What was wrong with the file as a whole. */
+  fault: string | null;
+  onFile: (file: File) => void;
+  onPaste: (text: string) => void;
+  onSplit: (separator: Separator, hasHeader: boolean) => void;
+}
+
+/** Where the file comes in, and how it was read. */
+export function FileSheet({ site, name, facts, fault, onFile, onPaste, onSplit }: Props) {
+  const [over, setOver] = useState(false);
+  const [pasted, setPasted] = useState('');
+  const fileId = useId();
+  const pasteId = useId();
+  const drop = (event: DragEvent) => {
+    event.preventDefault();
+    setOver(false);
+    const file = event.dataTransfer.files[0];
+    const text = event.dataTransfer.getData('text/plain');
+    if (file) onFile(file);
+    else if (text) onPaste(text);
+  };
+  return (
+    <Sheet id="file" title="The file" aside={name ?? undefined}>
+      <div
+        onDragOver={(event) => {
+          event.preventDefault();
+          setOver(true);
+        }}
+        onDragLeave={() => setOver(false)}
+        onDrop={drop}
+        className={`grid gap-4 border border-dashed p-4 lg:grid-cols-2 ${over ? 'border-petrol bg-petrol-wash' : 'border-rule'}`}
+      >
+        <div>
+          <label htmlFor={fileId} className="mb-1 block font-medium">
+            A file: CSV or tab-separated
+          </label>
+          <input
+            id={fileId}
+            type="file"
+            accept=".csv,.tsv,.txt,.tab,text/csv,text/tab-separated-values,text/plain"
+            className="block min-h-[44px] w-full text-[15px] file:mr-3 file:min-h-[44px] file:cursor-pointer file:rounded file:border file:border-solid file:border-ink file:bg-ink file:px-4 file:text-[15px] file:font-medium file:text-sheet"
+            onChange={(event) => {
+              const file = event.target.files?.[0];
+              if (file) onFile(file);
+              event.target.value = ''; // the same file again, mended meanwhile, is a choice too
+            }}
+          />
+          <p className="mt-2 text-sm text-ink-2">
+            One row a slot: string, position, serial, and what else you have. Comma, semicolon or tab; any
+            common encoding.{' '}
+            <a className="text-petrol hover:underline" href={paths.api.asBuiltCsv(site)}>
+              Take the as-built as it stands
+            </a>{' '}
+            as a pattern: it comes back in unchanged.
+          </p>
+        </div>
+        <div>
+          <label htmlFor={pasteId} className="mb-1 block font-medium">
+            Or paste cells from a spreadsheet
+          </label>
+          <textarea
+            id={pasteId}
+            rows={3}
+            value={pasted}
+            spellCheck={false}
+            onChange={(event) => setPasted(event.target.value)}
+            onPaste={(event) => {
+              const text = event.clipboardData.getData('text/plain');
+              if (pasted.trim() !== '' || text.trim() === '') return;
+              event.preventDefault();
+              setPasted(text);
+              onPaste(text);
+            }}
+            className="block w-full rounded border border-rule bg-sheet px-3 py-2 text-[16px]"
+          />
+          <Button className="mt-2" disabled={pasted.trim() === ''} onClick={() => onPaste(pasted)}>
+            Read what is pasted
+          </Button>
+        </div>
+      </div>
+      {fault && (
+        <div className="mt-4">
+          <Notice kind="failed" title="This can't be read">
+            {fault}
+          </Notice>
+        </div>
+      )}
+      {facts && (
+        <div className="mt-4 grid items-end gap-4 sm:grid-cols-2 lg:grid-cols-4">
+          <p className="text-[15px]">
+            <strong className="font-semibold">{number(facts.rows)} rows</strong>, {facts.headers.length}{' '}
+            columns
+            {facts.encoding && <>, {ENCODING_NAMES[facts.encoding]}</>}
+            {facts.emptyLines > 0 && (
+              <>
+                <br />
+                {number(facts.emptyLines)} empty {facts.emptyLines === 1 ? 'line' : 'lines'} left out
+              </>
+            )}
+          </p>
+          <Choice
+            label="Cells are separated by"
+            value={facts.separator}
+            options={SEPARATORS.map((s) => ({ value: s, label: SEPARATOR_NAMES[s] }))}
+            onChange={(value) => onSplit(value as Separator, facts.hasHeader)}
+          />
+          <label className="flex min-h-[44px] items-center gap-3 text-[15px]">
+            <input
+              type="checkbox"
+              className="h-5 w-5"
+              checked={facts.hasHeader}
+              onChange={(event) => onSplit(facts.separator, event.target.checked)}
+            />
+            The first row names the columns
+          </label>
+        </div>
+      )}
+      {facts && facts.faults.length > 0 && (
+        <div className="mt-4">
+          <Notice kind="failed" title="Parts of the file could not be split into cells">
+            <ul>
+              {facts.faults.slice(0, 5).map((f) => (
+                <li key={f.line}>
+                  Row {number(f.line)}: {f.message}.
+                </li>
+              ))}
+            </ul>
+          </Notice>
+        </div>
+      )}
+    </Sheet>
+  );
+}
