@@ -95,6 +95,7 @@ export const TABLE: readonly Row[] = [
       'trace',
       'readings',
       'capture',
+      'placements',
     ],
   },
   { folder: 'src/features', may: [], packages: [], subfolders: FEATURES },

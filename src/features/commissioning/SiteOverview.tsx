@@ -49,7 +49,9 @@ function StepSheet({
   onAccepted: () => void;
 }) {
   const open = step.gaps.filter((g) => !g.accepted);
-  const rest = step.gaps.length - MOST_GAPS;
+  // what has not begun is no list of faults: its points are one tap away
+  const shown = step.state === 'not_started' && step.gaps.length > 1 ? 0 : MOST_GAPS;
+  const rest = step.gaps.length - shown;
   return (
     <Sheet
       id={`step-${step.key}`}
@@ -74,23 +76,15 @@ function StepSheet({
         </>
       }
     >
-      {step.gaps.length > 0 && (
-        <Gaps
-          site={site.id}
-          gaps={step.gaps.slice(0, MOST_GAPS)}
-          mayAccept={mayAccept}
-          onAccepted={onAccepted}
-        />
+      {step.gaps.length > 0 && shown > 0 && (
+        <Gaps site={site.id} gaps={step.gaps.slice(0, shown)} mayAccept={mayAccept} onAccepted={onAccepted} />
       )}
       {rest > 0 && (
-        <details className="border-t border-rule-faint pt-1">
-          <summary className="target cursor-pointer text-petrol">{counted(rest, 'more point')}</summary>
-          <Gaps
-            site={site.id}
-            gaps={step.gaps.slice(MOST_GAPS)}
-            mayAccept={mayAccept}
-            onAccepted={onAccepted}
-          />
+        <details className={shown > 0 ? 'border-t border-rule-faint pt-1' : ''}>
+          <summary className="target cursor-pointer text-petrol">
+            {shown > 0 ? counted(rest, 'more point') : `${counted(rest, 'point')} open`}
+          </summary>
+          <Gaps site={site.id} gaps={step.gaps.slice(shown)} mayAccept={mayAccept} onAccepted={onAccepted} />
         </details>
       )}
       {step.gaps.length === 0 && step.key !== 'handover' && step.state === 'done' && (

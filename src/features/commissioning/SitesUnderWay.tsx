@@ -46,28 +46,34 @@ function StepRow({ site }: { site: SiteSteps }) {
   );
 }
 
-const MOST_GAPS = 3;
-
+/** What blocks, a line a step: its first point and how many more. */
 function Blocks({ site }: { site: SiteSteps }) {
-  const gaps = openGaps(site.steps);
-  if (gaps.length === 0)
+  const blocking = site.steps.flatMap((step) => {
+    const [first, ...more] = openGaps([step]);
+    return first ? [{ step, first, more: more.length }] : [];
+  });
+  if (blocking.length === 0)
     return <p className="text-ink-2">Nothing blocks the handover. It waits to be made.</p>;
   return (
     <>
-      <h3 className="text-sm text-ink-2">
-        {gaps.length === 1 ? 'One point blocks the handover' : `${gaps.length} points block the handover`}
-      </h3>
+      <h3 className="text-sm text-ink-2">Blocks the handover</h3>
       <ul className="mt-1">
-        {gaps.slice(0, MOST_GAPS).map((gap) => (
-          <li key={gap.key}>{gap.words}</li>
-        ))}
-        {gaps.length > MOST_GAPS && (
-          <li>
-            <a href={paths.commissioningSite(site.id)} className="text-petrol hover:underline">
-              and {gaps.length - MOST_GAPS} more
-            </a>
+        {blocking.map(({ step, first, more }) => (
+          <li key={step.key}>
+            {first.words}
+            {more > 0 && (
+              <>
+                {' '}
+                <a
+                  href={`${paths.commissioningSite(site.id)}#step-${step.key}`}
+                  className="text-petrol hover:underline"
+                >
+                  And {counted(more, 'more point')} of {STEP_NAMES[step.key].toLowerCase()}
+                </a>
+              </>
+            )}
           </li>
-        )}
+        ))}
       </ul>
     </>
   );

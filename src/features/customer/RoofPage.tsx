@@ -3,7 +3,7 @@ import { Caution } from '../../components/ui/Caution';
 import { Sheet } from '../../components/ui/Sheet';
 import { DayCurve } from '../../drawings/DayCurve';
 import { energy, percent } from '../../drawings/numbers';
-import { clock, zoneName } from '../../drawings/times';
+import { clock, longDate, zoneName } from '../../drawings/times';
 import { api } from '../../lib/api';
 import { queryClient } from '../../lib/query-client';
 import { clocksDiffer, useReaderZone } from '../../components/ui/reader-zone';
@@ -96,6 +96,47 @@ function Today({ roof }: { roof: CustomerSite }) {
   );
 }
 
+/** The papers of the handover: the newest first, earlier ones below. */
+function Papers({ roof }: { roof: CustomerSite }) {
+  const [newest, ...earlier] = roof.papers;
+  if (!newest) return null;
+  const file = (paper: CustomerSite['papers'][number]) => `${paths.api.paper(paper.ref)}?form=pdf`;
+  const day = (paper: CustomerSite['papers'][number]) => longDate(paper.madeAt, roof.site.timeZone);
+  return (
+    <Sheet id="papers" title="Papers">
+      <p>
+        How your system is built, what was measured, and how to look after it, as of {day(newest)}. Keep a
+        copy where the people who work on the roof will find it.
+      </p>
+      <p className="mt-2">
+        <a
+          href={file(newest)}
+          className="inline-flex min-h-[44px] items-center font-semibold text-petrol hover:underline"
+        >
+          Handover papers, PDF
+        </a>
+      </p>
+      {earlier.length > 0 && (
+        <details>
+          <summary className="target cursor-pointer text-petrol">Earlier versions</summary>
+          <ul>
+            {earlier.map((paper) => (
+              <li key={paper.ref}>
+                <a
+                  href={file(paper)}
+                  className="inline-flex min-h-[44px] items-center text-petrol hover:underline"
+                >
+                  Version {paper.version}, {day(paper)}
+                </a>
+              </li>
+            ))}
+          </ul>
+        </details>
+      )}
+    </Sheet>
+  );
+}
+
 /** A roof for the people whom it belongs to: read only, in sentences. */
 export function RoofPage({ initial }: { initial: CustomerSite }) {
   const readerZone = useReaderZone();
@@ -166,6 +207,7 @@ export function RoofPage({ initial }: { initial: CustomerSite }) {
             <p className="mt-2 text-ink-2">In an emergency call the emergency services first.</p>
           </Sheet>
         </div>
+        <Papers roof={roof} />
       </div>
     </>
   );

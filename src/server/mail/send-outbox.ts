@@ -9,6 +9,9 @@ const MOST_TRIES = 12;
 const FIRST_WAIT_S = 60;
 const LONGEST_WAIT_S = 6 * 3600;
 
+/** A letter's own identifier, the same at every try. */
+export const messageIdOf = (ref: string): string => `<${ref}@wakeline>`;
+
 /** Seconds until the next try after `attempts` failed ones: doubling from a minute to six hours. */
 export const waitAfter = (attempts: number): number =>
   Math.min(LONGEST_WAIT_S, FIRST_WAIT_S * 2 ** Math.max(0, attempts - 1));
@@ -54,7 +57,7 @@ export async function sendDue(
           subject: message.subject,
           text: message.text,
           html: message.html,
-          messageId: `<${message.ref}@wakeline>`,
+          messageId: messageIdOf(message.ref),
           headers: { 'Auto-Submitted': 'auto-generated' },
         });
         await markSent(tx, message.id, now());

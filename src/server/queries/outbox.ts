@@ -112,5 +112,5 @@ export async function newestMessages(tx: Tx, limit = 200): Promise<OutboxRow[]> 
       lastError: 'last_error',
     })
     .orderBy('created_at', 'desc')
-    .limit(limit) as unknown as Promise<OutboxRow[]>;
+    .limit(limit);
 }

@@ -20,6 +20,7 @@ import {
   type QuarterRow,
   type RoofRow,
 } from '../queries/customer';
+import { packsOf } from '../queries/handover';
 import { sitesNow } from '../queries/sites-now';
 
 /** Days of the site's own quarters that its clear day is scaled to. */
@@ -162,6 +163,12 @@ export async function customerSite(tx: Tx, ref: string, at: Date): Promise<Custo
     },
     life: lifeOf(roof, life, today.energy ?? 0),
     lastTest: await lastTestOf(tx, roof.siteId),
+    papers: (await packsOf(tx, roof.siteId)).map((p) => ({
+      ref: p.ref,
+      version: p.version,
+      madeAt: p.madeAt.toISOString(),
+      pdfBytes: p.pdfBytes,
+    })),
   };
 }
 

@@ -8,6 +8,7 @@ import { publicUrl } from '../config';
 import type { Tx } from '../db/transaction';
 import { AppError, found } from '../errors';
 import { letter } from '../mail/letter';
+import { asBuiltParts } from '../queries/as-built';
 import { commissioningFacts } from '../queries/commissioning-facts';
 import {
   addPack,
@@ -22,9 +23,10 @@ import { tellAsBuiltChanged, tellSiteChanged } from '../queries/live-notices';
 import { addMessage } from '../queries/outbox';
 import { addAuditEntry, findPersonName } from '../queries/people';
 import { visibleSite, type VisibleSite } from '../queries/visible-site';
+import { asBuiltCsvText } from '../reports/as-built-csv';
 import { fingerprintOf } from '../reports/fingerprint';
 import { packData, type PackData } from '../reports/handover/data';
-import { asBuiltCsv, handoverPdf } from '../reports/handover/document';
+import { handoverPdf } from '../reports/handover/document';
 import { designWords } from './handover-design';
 import { packTests } from './handover-tests';
 
@@ -86,7 +88,7 @@ export async function makeHandover(
     fingerprint,
     data: { ...data, tests, design },
     pdf,
-    csv: Buffer.from(asBuiltCsv(data), 'utf8'),
+    csv: Buffer.from(asBuiltCsvText(found(await asBuiltParts(tx, site.id), 'site')), 'utf8'),
   });
   const began = await beginOperating(tx, site.id, localDay(at, site.timeZone));
   await addAuditEntry(tx, {

@@ -1,7 +1,5 @@
 import { PAPER } from '../../../drawings/paint';
 import { longDate } from '../../../drawings/times';
-import { COLUMN_LABELS } from '../../../domain/commissioning/import/columns';
-import { csvText, type Column } from '../csv';
 import { Paper } from '../pdf/paper';
 import type { PackData, PackTest } from './data';
 import { installChecks, openPoints, testResults } from './results';
@@ -92,27 +90,4 @@ function staircaseMark(paper: Paper): void {
     pen.rect(12.5, 16.5, 6.5, 5).fill(PAPER.rust);
     pen.restore();
   });
-}
-
-/** The as-built as the import reads it: string, position, serial and where everything hangs. */
-export function asBuiltCsv(data: PackData): string {
-  const rows = data.strings.flatMap((string) => string.slots.map((slot) => ({ string, slot })));
-  type Row = (typeof rows)[number];
-  const columns: Column<Row>[] = [
-    { header: COLUMN_LABELS.string, value: (r) => r.string.name },
-    { header: COLUMN_LABELS.position, value: (r) => r.slot.position },
-    { header: COLUMN_LABELS.serial, value: (r) => r.slot.serial },
-    { header: COLUMN_LABELS.unitType, value: (r) => r.string.unitType },
-    { header: COLUMN_LABELS.moduleType, value: (r) => r.slot.moduleType },
-    { header: COLUMN_LABELS.plane, value: (r) => r.string.plane },
-    { header: COLUMN_LABELS.inverter, value: (r) => r.string.inverter },
-    { header: COLUMN_LABELS.input, value: (r) => r.string.input },
-    { header: COLUMN_LABELS.zone, value: (r) => r.string.zone },
-    { header: COLUMN_LABELS.logger, value: (r) => r.string.logger },
-    { header: COLUMN_LABELS.transmitters, value: (r) => r.string.transmitters.join('; ') },
-    { header: COLUMN_LABELS.roofX, value: (r) => r.slot.x },
-    { header: COLUMN_LABELS.roofY, value: (r) => r.slot.y },
-    { header: COLUMN_LABELS.roofPlace, value: (r) => r.slot.place },
-  ];
-  return csvText(columns, rows);
 }

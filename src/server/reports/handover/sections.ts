@@ -97,7 +97,8 @@ export function people(paper: Paper, data: PackData): void {
 
 /** Inverters left, their inputs as branches, the strings that hang on each. */
 export function singleLine(paper: Paper, data: PackData): void {
-  paper.heading('3  Single-line description', 1);
+  const first = data.inverters[0]?.inputs.filter((i) => i.strings.length > 0).length ?? 0;
+  paper.heading('3  Single-line description', 1, 80 + first * 24);
   paper.text(
     'Every string ends in a home run at the inverter input named here; strings named together share the input and its voltage.',
   );
@@ -201,8 +202,9 @@ function roof(paper: Paper, data: PackData): void {
     (paper.width - 40) / Math.max(1, east - west),
     MOST_ROOF_HEIGHT / Math.max(1, north - south),
   );
-  paper.heading('Roof plan', 2);
-  paper.figure((north - south) * scale + 34, (left, top) => {
+  const height = (north - south) * scale + 34;
+  paper.heading('Roof plan', 2, height + 20);
+  paper.figure(height, (left, top) => {
     const { pen } = paper;
     const at = (p: { x: number; y: number }) =>
       [left + 20 + (p.x - west) * scale, top + 14 + (north - p.y) * scale] as const;
@@ -256,7 +258,7 @@ function roof(paper: Paper, data: PackData): void {
 const SLOTS_A_ROW = 4;
 
 export function layout(paper: Paper, data: PackData): void {
-  paper.heading('4  String layout with serials', 1);
+  paper.heading('4  String layout with serials', 1, data.site.outline ? MOST_ROOF_HEIGHT : 120);
   roof(paper, data);
   for (const s of data.strings) {
     paper.heading(s.name, 2);

@@ -186,10 +186,11 @@ export class Paper {
     this.y += size * 0.5;
   }
 
-  heading(text: string, level: 1 | 2 | 3): void {
+  /** @param keep points that must fit under it on the same page */
+  heading(text: string, level: 1 | 2 | 3, keep = { 1: 120, 2: 100, 3: 70 }[level]): void {
     const size = { 1: 17, 2: 12.5, 3: 10.5 }[level];
     this.y += { 1: 14, 2: 12, 3: 6 }[level];
-    this.need(size * 1.3 + (level === 1 ? 90 : 60));
+    this.need(size * 1.3 + keep);
     if (level === 1) {
       this.pen
         .moveTo(MARGIN.left, this.y)
@@ -271,7 +272,7 @@ export class Paper {
           this.heightOf(cell, (widths[i] ?? 0) - (i === cells.length - 1 ? 0 : gap), style),
         ),
       );
-    this.need(48);
+    this.need(28 + heightOfRow(rows[0] ?? []));
     head();
     for (const cells of rows) {
       if (this.y + heightOfRow(cells) + 5 > PAGE.height - MARGIN.bottom) {
