@@ -117,13 +117,13 @@ export async function knownUnits(
             coalesce((extract(epoch from greatest(p.placed_from, ended.at)) * 1000)::float8, 0) as "sinceMs"
      from unit u
      join unit_type t on t.id = u.unit_type_id
-     left join placement p on p.unit_id = u.id and p.placed_to is null
-     left join (select slot.id as slot_id, slot.position, s.id as string_id, s.name as string, site.id as site_id, site.name as site
-                from slot join string s on s.id = slot.string_id join site on site.id = slot.site_id
-                where ${SITE_VISIBLE}) seen on seen.slot_id = p.slot_id
-     left join (select e.unit_id, max(e.placed_to) as at from placement e join unit o on o.id = e.unit_id
-                where o.organisation_id = :organisationId and o.serial = any (:serials::text[]) group by e.unit_id) ended
-       on ended.unit_id = u.id
+     -- unit by unit: thousands that have just been placed are not in the planner's statistics yet
+     left join lateral (select p.id, p.slot_id, p.placed_from from placement p
+                        where p.unit_id = u.id and p.placed_to is null limit 1) p on true
+     left join lateral (select slot.id as slot_id, slot.position, s.id as string_id, s.name as string, site.id as site_id, site.name as site
+                        from slot join string s on s.id = slot.string_id join site on site.id = slot.site_id
+                        where slot.id = p.slot_id and ${SITE_VISIBLE} limit 1) seen on true
+     left join lateral (select max(e.placed_to) as at from placement e where e.unit_id = u.id) ended on true
      where u.organisation_id = :organisationId and u.serial = any (:serials::text[])`,
     { organisationId, serials: [...serials] },
   );

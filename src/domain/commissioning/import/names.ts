@@ -45,6 +45,8 @@ export function nearestName(text: string, known: readonly string[]): string | nu
 /** Looks names up, with what the person has said about foreign ones. */
 export class NameBook {
   private readonly byBare = new Map<string, string>();
+  /** Files say the same name thousands of times. */
+  private readonly seen = new Map<string, string | undefined>();
   constructor(
     readonly names: readonly string[],
     private readonly meanings: Readonly<Record<string, string>> = {},
@@ -53,8 +55,12 @@ export class NameBook {
   }
   /** The name as we write it; undefined: unknown here. */
   find(text: string): string | undefined {
+    if (this.seen.has(text)) return this.seen.get(text);
     const bare = bareName(text);
     const meant = this.meanings[bare];
-    return this.byBare.get(bare) ?? (meant === undefined ? undefined : this.byBare.get(bareName(meant)));
+    const found =
+      this.byBare.get(bare) ?? (meant === undefined ? undefined : this.byBare.get(bareName(meant)));
+    this.seen.set(text, found);
+    return found;
   }
 }

@@ -6,6 +6,7 @@ import { decimalMarkOf, readNumber, type DecimalMark } from './number';
 import { readSerial } from './serial';
 import {
   bareName,
+  inputName,
   NAME_COLUMNS,
   type CellFault,
   type FaultCode,
@@ -122,43 +123,55 @@ function readRoof(
   return read.value;
 }
 
-/** `Inverter 1/2`, `2`, `MPPT 2`, beside an inverter's name or, where the site has one inverter only, without. */
-function readInput(
-  text: string,
-  inverter: string | null | undefined,
-  line: number,
-  names: KnownNames,
-  faults: Faults,
-): RawRow['input'] {
-  if (text === '' || inverter === undefined) return text === '' ? null : undefined;
-  const whole = names.inputs.find(
-    (i) => bareName(`${i.inverter}/${i.number}`) === bareName(text).replace(/\s*\/\s*/, '/'),
-  );
-  if (whole && (inverter === null || inverter === whole.inverter)) return whole;
-  const inverters = [...new Set(names.inputs.map((i) => i.inverter))];
-  const owner = inverter ?? (inverters.length === 1 ? inverters[0] : undefined);
-  const listed = (owner === undefined ? names.inputs : names.inputs.filter((i) => i.inverter === owner))
-    .slice(0, 8)
-    .map((i) => `${i.inverter}/${i.number}`)
-    .join(', ');
-  const remedy = listed
-    ? `Inputs here: ${listed}. Add others on the as-built page.`
-    : 'Enter the inverter and its inputs on the as-built page first.';
-  const number = /(\d+)\s*$/.exec(text)?.[1];
-  if (owner === undefined) {
+type Input = KnownNames['inputs'][number];
+
+/** Finds inputs: `Inverter 1/2`, `2`, `MPPT 2`, beside an inverter's name or, where there is one only, without. */
+class InputBook {
+  private readonly whole = new Map<string, Input>();
+  private readonly byNumber = new Map<string, Input>();
+  constructor(
+    private readonly inputs: readonly Input[],
+    private readonly inverters: readonly string[],
+  ) {
+    for (const input of inputs) {
+      this.whole.set(bareName(inputName(input.inverter, input.number)), input);
+      this.byNumber.set(inputName(input.inverter, input.number), input);
+    }
+  }
+
+  read(
+    text: string,
+    inverter: string | null | undefined,
+    line: number,
+    faults: Faults,
+  ): Input | null | undefined {
+    if (text === '' || inverter === undefined) return text === '' ? null : undefined;
+    const whole = text.includes('/') ? this.whole.get(bareName(text).replace(/\s*\/\s*/, '/')) : undefined;
+    if (whole && (inverter === null || inverter === whole.inverter)) return whole;
+    const owner = inverter ?? (this.inverters.length === 1 ? this.inverters[0] : undefined);
+    if (owner === undefined)
+      return this.told(`input "${text}" names no inverter, and the site has several`, owner, line, faults);
+    const number = /(\d+)\s*$/.exec(text)?.[1];
+    const found = number === undefined ? undefined : this.byNumber.get(inputName(owner, Number(number)));
+    return found ?? this.told(`${owner} has no input "${text}"`, owner, line, faults);
+  }
+
+  private told(message: string, owner: string | undefined, line: number, faults: Faults): undefined {
+    const listed = this.inputs
+      .filter((i) => owner === undefined || i.inverter === owner)
+      .slice(0, 8)
+      .map((i) => inputName(i.inverter, i.number))
+      .join(', ');
     faults.add(
       line,
       'input',
       'name_unknown',
-      `input "${text}" names no inverter, and the site has several`,
-      remedy,
+      message,
+      listed
+        ? `Inputs here: ${listed}. Add others on the as-built page.`
+        : 'Enter the inverter and its inputs on the as-built page first.',
     );
-    return undefined;
   }
-  const found = names.inputs.find((i) => i.inverter === owner && i.number === Number(number));
-  if (found) return found;
-  faults.add(line, 'input', 'name_unknown', `${owner} has no input "${text}"`, remedy);
-  return undefined;
 }
 
 /** Every cell of the table, faults added to `faults`. `onRow` is told how far it is. */
@@ -178,6 +191,7 @@ export function readRows(
     roofX: choices.decimalMark ?? decimalMarkOf([...column('roofX'), ...column('roofY')]),
   };
   const books = booksOf(names, choices);
+  const inputs = new InputBook(names.inputs, books.inverter.names);
   const strings = new NameBook(names.strings.map((s) => s.name));
   const madeHere = new Map<string, string>();
   let above = '';
@@ -265,7 +279,7 @@ export function readRows(
       string: readString(),
       position: readPosition(cell('position'), line, faults),
       serial: readUnit(),
-      input: readInput(cell('input'), inverter, line, names, faults),
+      input: inputs.read(cell('input'), inverter, line, faults),
       transmitters:
         senders.length === 0
           ? null
