@@ -15,6 +15,8 @@ export class ApiError extends Error {
     readonly requestId: string | null = null,
     /** Seconds until another try makes sense, where the server says so. */
     readonly retryAfterS: number | null = null,
+    /** What stands on the server instead, where two people changed the same thing. */
+    readonly current: unknown = null,
   ) {
     super(message);
     this.name = 'ApiError';
@@ -42,6 +44,7 @@ export interface Call {
   /** Sent as JSON. */
   body?: unknown;
   query?: Record<string, QueryValue>;
+  headers?: Record<string, string>;
   signal?: AbortSignal;
 }
 
@@ -57,7 +60,8 @@ function fieldsOf(value: unknown): FieldProblem[] {
   );
 }
 
-async function errorOf(response: Response): Promise<ApiError> {
+/** The error that an answer stands for. */
+export async function errorOf(response: Response): Promise<ApiError> {
   const retryAfter = Number(response.headers.get('retry-after'));
   const retryAfterS = retryAfter > 0 ? retryAfter : null;
   const body: unknown = await response.json().catch(() => null);
@@ -77,6 +81,7 @@ async function errorOf(response: Response): Promise<ApiError> {
     fieldsOf(body.fields),
     typeof body.requestId === 'string' ? body.requestId : null,
     retryAfterS,
+    body.current ?? null,
   );
 }
 
@@ -85,7 +90,7 @@ async function errorOf(response: Response): Promise<ApiError> {
  * @throws ApiError for every answer that is not a success, and where there is no answer
  */
 export async function api<T>(path: string, call: Call = {}): Promise<T> {
-  const headers: Record<string, string> = { accept: 'application/json' };
+  const headers: Record<string, string> = { ...call.headers, accept: 'application/json' };
   if (call.body !== undefined) headers['content-type'] = 'application/json';
   let response: Response;
   try {

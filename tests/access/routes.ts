@@ -1,3 +1,4 @@
+import { randomUUID } from 'node:crypto';
 import type { Permission } from '../../src/domain/access/permissions';
 
 /** A site of the matrix and one of its strings, by public identifier. */
@@ -14,6 +15,7 @@ export interface Route {
   /** What its address names. */
   of: 'nothing' | 'site' | 'string';
   path: (target: Target) => string;
+  /** As it is, or made for the target. */
   body?: unknown;
   /** Statuses that mean that somebody who may was served. */
   served: readonly number[];
@@ -164,5 +166,82 @@ export const ROUTES: readonly Route[] = [
       choices: { decimalMark: null, fillDown: false, meanings: {}, newStrings: null },
     },
     served: [200],
+  },
+  // install checks, meter readings and photos
+  get('commissioning/[site]/checks.astro', 'checks.read', 'site', (t) => `/commissioning/${t.site}/checks`),
+  get(
+    'commissioning/[site]/readings.astro',
+    'checks.read',
+    'site',
+    (t) => `/commissioning/${t.site}/readings`,
+  ),
+  get('api/sites/[site]/checks.ts', 'checks.read', 'site', (t) => `/api/sites/${t.site}/checks`),
+  {
+    file: 'api/sites/[site]/checks.ts',
+    method: 'POST',
+    permission: 'checks.write',
+    of: 'site',
+    path: (t) => `/api/sites/${t.site}/checks`,
+    body: (t: Target) => ({
+      ref: randomUUID(),
+      stringId: t.string,
+      check: 'strain_relief',
+      result: 'pass',
+      at: new Date().toISOString(),
+    }),
+    served: [201, 409],
+  },
+  get('api/sites/[site]/checks.csv.ts', 'checks.read', 'site', (t) => `/api/sites/${t.site}/checks.csv`),
+  get('api/sites/[site]/readings.ts', 'checks.read', 'site', (t) => `/api/sites/${t.site}/readings`),
+  {
+    file: 'api/sites/[site]/readings.ts',
+    method: 'POST',
+    permission: 'checks.write',
+    of: 'site',
+    path: (t) => `/api/sites/${t.site}/readings`,
+    body: (t: Target) => ({
+      ref: randomUUID(),
+      stringId: t.string,
+      stage: 'before_energising',
+      kind: 'positive_to_negative',
+      light: 'bright',
+      voltage: 8.4,
+      at: new Date().toISOString(),
+    }),
+    served: [201, 409],
+  },
+  get('api/sites/[site]/readings.csv.ts', 'checks.read', 'site', (t) => `/api/sites/${t.site}/readings.csv`),
+  get('api/sites/[site]/capture.ts', 'checks.read', 'site', (t) => `/api/sites/${t.site}/capture`),
+  get(
+    'api/sites/[site]/attachments.ts',
+    'attachment.read',
+    'site',
+    (t) => `/api/sites/${t.site}/attachments`,
+  ),
+  {
+    file: 'api/sites/[site]/attachments.ts',
+    method: 'POST',
+    permission: 'checks.write',
+    of: 'site',
+    path: (t) =>
+      `/api/sites/${t.site}/attachments?ref=${randomUUID()}&subject=site&name=x.jpg&at=${new Date().toISOString()}`,
+    body: { not: 'a picture' },
+    served: [422],
+  },
+  get(
+    'api/attachments/[attachment].ts',
+    'attachment.read',
+    'nothing',
+    () => '/api/attachments/00000000-0000-4000-8000-000000000002',
+    [404],
+  ),
+  {
+    file: 'api/strings/[string]/sign-off.ts',
+    method: 'POST',
+    permission: 'checks.write',
+    of: 'string',
+    path: (t) => `/api/strings/${t.string}/sign-off`,
+    body: { ref: '00000000-0000-4000-8000-000000000003', fingerprint: '0'.repeat(64) },
+    served: [409],
   },
 ];

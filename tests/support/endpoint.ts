@@ -24,6 +24,7 @@ export async function ask(
   });
   const viewer = actor && {
     name: name ?? 'Sunniva Quill',
+    id: '00000000-0000-4000-8000-0000000000aa',
     initials: 'SQ',
     email: 'x@lowfield.example',
     role: actor.role,

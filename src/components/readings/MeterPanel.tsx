@@ -19,10 +19,20 @@ interface Props extends PanelProps {
   place: Place;
   /** Where the pad's last key leads: the next kind of reading of this string; without it the pad folds. */
   then?: Place | null;
+  /** What is asked besides the reading: not what is known already, or asked elsewhere. */
+  asks?: { heard: boolean; meter: boolean };
 }
 
 /** Circumstances and the number itself, big enough for sun and gloves. */
-export function MeterPanel({ form, faults, place, then = null, typed, choose }: Props) {
+export function MeterPanel({
+  form,
+  faults,
+  place,
+  then = null,
+  asks = { heard: true, meter: true },
+  typed,
+  choose,
+}: Props) {
   const field = FIELD_AT[place];
   const text = form[field] ?? '';
   const fault = faults[field];
@@ -57,16 +67,9 @@ export function MeterPanel({ form, faults, place, then = null, typed, choose }: 
           options={LIGHTS.map((value) => ({ value, label: LIGHT_LABELS[value] }))}
           onChange={(light) => choose({ light })}
         />
-        <Segmented
-          look="bold"
-          name="meter"
-          label="Meter input"
-          value={chosen(METERS, form.meter, 'high_impedance')}
-          options={METERS.map((value) => ({ value, label: METER_LABELS[value] }))}
-          onChange={(meter) => choose({ meter })}
-        />
+        {asks.meter && <MeterInput value={form.meter} onChange={(meter) => choose({ meter })} />}
       </div>
-      {tells && (
+      {tells && asks.heard && (
         <Field
           label="Units that have answered the roll call"
           name="heard"
@@ -145,6 +148,20 @@ export function MeterPanel({ form, faults, place, then = null, typed, choose }: 
         />
       )}
     </div>
+  );
+}
+
+/** How the meter's input loads the string: units in shutdown are pulled down by a low impedance. */
+export function MeterInput({ value, onChange }: { value: string; onChange: (meter: string) => void }) {
+  return (
+    <Segmented
+      look="bold"
+      name="meter"
+      label="Meter input"
+      value={chosen(METERS, value, 'high_impedance')}
+      options={METERS.map((mode) => ({ value: mode, label: METER_LABELS[mode] }))}
+      onChange={onChange}
+    />
   );
 }
 

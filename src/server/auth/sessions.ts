@@ -92,6 +92,7 @@ export async function signedInBy(cookieHeader: string): Promise<SignedIn | { coo
         sites: person.role === 'customer' ? person.sites : 'all',
       },
       viewer: {
+        id: person.ref,
         name: person.name,
         initials: initialsOf(person.name),
         email: person.email,

@@ -4,6 +4,8 @@ export type Theme = 'system' | 'light' | 'dark';
 
 /** The signed-in person as the page shells show them. */
 export interface Viewer {
+  /** Public identifier. */
+  id: string;
   name: string;
   initials: string;
   email: string;

@@ -92,7 +92,9 @@ export function endpoint<P extends z.ZodType, Q extends z.ZodType, B extends z.Z
   spec: EndpointSpec<P, Q, B> & {
     permission: Permission;
     /** Takes a body that is no JSON, before the transaction begins: a slow sender holds no connection. */
-    receive?: (request: Request, query: z.infer<Q>) => Promise<R>;
+    receive?: (
+      call: Pick<ActorCall<z.infer<P>, z.infer<Q>, z.infer<B>>, 'actor' | 'params' | 'query' | 'context'>,
+    ) => Promise<R>;
   },
   run: (call: ActorCall<z.infer<P>, z.infer<Q>, z.infer<B>, R>) => Promise<unknown>,
 ): APIRoute {
@@ -106,7 +108,7 @@ export function endpoint<P extends z.ZodType, Q extends z.ZodType, B extends z.Z
           message: `The role ${actor.role} does not include this. Ask a manager.`,
         });
       const call = await parsed(spec, context);
-      const received = (await spec.receive?.(context.request, call.query)) as R;
+      const received = (await spec.receive?.({ ...call, actor })) as R;
       return reply(await asActor(actor, (tx) => run({ ...call, actor, tx, received })));
     } catch (error) {
       return problem(error, context.locals.requestId);

@@ -1,0 +1,258 @@
+import { useState } from 'react';
+import { readingAround } from '../../domain/commissioning/readings/around';
+import { STAGE_WORDS, type ReadingStage } from '../../domain/commissioning/readings/stages';
+import { interpretReading } from '../../domain/readings/interpret';
+import type { ReadingLight } from '../../domain/readings/reading';
+import { READING_CAUTION } from '../../domain/readings/words';
+import { AnswerSheet } from '../../components/readings/AnswerSheet';
+import { MeterInput, MeterPanel } from '../../components/readings/MeterPanel';
+import { ReadAloud } from '../../components/readings/ReadAloud';
+import { ReadingScale } from '../../components/readings/ReadingScale';
+import { FIELD_AT, LIGHTS, METERS, PLACES, chosen, readForm } from '../../components/readings/form';
+import { HOW_TO_MEASURE, METER_LABELS, aloud, cautionParts } from '../../components/readings/words';
+import { Button } from '../../components/ui/Button';
+import { Caution } from '../../components/ui/Caution';
+import { Segmented } from '../../components/ui/Segmented';
+import { volts } from '../../drawings/numbers';
+import { corrected } from '../../lib/capture-queue';
+import { newRef } from '../../lib/capture-records';
+import type { NewRecord } from '../../lib/capture-store';
+import type { CaptureSnapshot, CaptureString } from '../../schemas/api/capture';
+import { PhotoButton, WaitingPhotos } from './Photos';
+import { RecordedReadings } from './RecordedReadings';
+import { readingNow, readingRecord } from './records';
+import { keepPhotos } from './save';
+import type { ScreenProps } from './screen';
+import {
+  KIND_OF,
+  forString,
+  formOf,
+  kindWords,
+  placeAfter,
+  stageOf,
+  stringAfter,
+  typedPlaces,
+  typesOf,
+  viewChange,
+  type CaptureView,
+} from './view';
+
+const capital = (words: string): string => words.charAt(0).toUpperCase() + words.slice(1);
+
+interface Moment {
+  stage: ReadingStage;
+  light: ReadingLight;
+  /** ISO 8601 */
+  at: string;
+}
+
+/** What is typed, with what else was read at this string and its neighbours in the same light, and what it means. */
+function meaning(site: CaptureSnapshot, string: CaptureString, view: CaptureView, moment: Moment) {
+  const { unitType, module } = typesOf(site, string);
+  if (!unitType || !module) return null;
+  const form = formOf(view, string, unitType.kind, moment.stage);
+  const around = readingAround(site, string.id, { ...moment, kind: 'positive_to_negative' });
+  const between = string.readings.find(
+    (r) => r.stage === moment.stage && r.kind === 'positive_to_negative' && r.light === moment.light,
+  );
+  const text = (typed: string, kept: number | null | undefined): string =>
+    typed.trim() !== '' || kept == null ? typed : String(kept);
+  const whole = {
+    ...form,
+    v: text(form.v, between?.voltage),
+    pe: text(form.pe, around.own.positive),
+    ne: text(form.ne, around.own.negative),
+  };
+  const known = { units: string.units, unitType, module, siblings: around.siblings };
+  const read = readForm(typedPlaces(view).length === 0 ? form : whole, known);
+  return { form, around, ...read, answer: read.question && interpretReading(read.question) };
+}
+
+/** The meter's screen of one string: what is typed, what it means, and on to the next with one tap. */
+export function ReadingScreen({ phone, state, site, string, view, change, clock, say }: ScreenProps) {
+  const { unitType, module } = typesOf(site, string);
+  const { stage, stages } = stageOf(view, unitType ?? { kind: 'shutdown_only', releasedBy: 'keep_alive' });
+  const place = chosen(PLACES, view.at, 'between');
+  const [fault, setFault] = useState('');
+  const [saving, setSaving] = useState(false);
+  const meter = chosen(METERS, view.meter, 'high_impedance');
+  const light = chosen(LIGHTS, view.light, 'bright');
+
+  const read = unitType && module && meaning(site, string, view, { stage, light, at: clock.toISOString() });
+  if (!unitType || !module || !read) return <p>The types of this string are not on this phone yet.</p>;
+  const { form, faults, question, waiting, answer } = read;
+  const next = stringAfter(site.strings, string.id);
+  const places = typedPlaces(view);
+  const cautions = answer?.cautions ?? [READING_CAUTION];
+  const fixed = state.records.find((r) => r.ref === view.fix && r.kind === 'reading') ?? null;
+
+  const facts = (of: (typeof places)[number], voltage: number) => ({
+    stage,
+    kind: KIND_OF[of],
+    light,
+    meterMode: meter,
+    commanded: chosen(['released', 'shutdown', 'unknown'] as const, form.commanded, 'unknown'),
+    voltage,
+    note: '',
+  });
+  const save = async () => {
+    const values = places.map((of) => ({
+      of,
+      read: readForm({ ...form, v: form[FIELD_AT[of]] ?? '', pe: '', ne: '' }),
+    }));
+    const made: NewRecord[] = [];
+    for (const [i, { of, read: one }] of values.entries()) {
+      if (!one.question) {
+        change({ at: of });
+        setFault(`${kindWords(of)}: ${Object.values(one.faults)[0] ?? 'type what the meter shows.'}`);
+        return;
+      }
+      const given = facts(of, one.question.voltageV);
+      const ref = i === 0 && view.draft ? view.draft : newRef();
+      const before = readingNow(string, stage, given.kind);
+      made.push(
+        readingRecord(
+          { snapshot: site, string, ref, at: new Date().toISOString() },
+          given,
+          before?.ref ?? null,
+        ),
+      );
+    }
+    setSaving(true);
+    try {
+      if (fixed && made.length === 1) {
+        const { ref, supersedes } = fixed.body as { ref: string; supersedes: string | null };
+        const body = { ...made[0]!.body, ref, supersedes };
+        await phone?.change([corrected(fixed, body, made[0]!.label)]);
+      } else await phone?.add(made);
+      setFault('');
+      say(`Kept: ${made.map((r) => r.label).join('; ')}.`);
+      change(
+        next && !fixed
+          ? forString(view, next.id)
+          : { ...forString(view, ''), part: fixed ? 'waiting' : 'readings' },
+      );
+    } catch (error) {
+      setFault(error instanceof Error ? error.message : 'It could not be kept.');
+    } finally {
+      setSaving(false);
+    }
+  };
+  const photograph = async (files: File[]) => {
+    const draft = view.draft || newRef();
+    if (!view.draft) change({ draft }, 'typed');
+    try {
+      const left =
+        phone &&
+        (await keepPhotos(files, {
+          phone,
+          snapshot: site,
+          string,
+          subject: 'meter_reading',
+          subjectRef: draft,
+          of: `meter, ${kindWords(place)}`,
+        }));
+      setFault(left ?? '');
+    } catch (error) {
+      setFault(error instanceof Error ? error.message : 'The photo could not be kept.');
+    }
+  };
+  const photos = state.records.filter(
+    (r) => r.kind === 'photo' && r.body.subjectRef === view.draft && view.draft !== '',
+  );
+
+  return (
+    <form
+      noValidate
+      onSubmit={(event) => {
+        event.preventDefault();
+        void save();
+      }}
+    >
+      <h1 tabIndex={-1} className="text-[30px] leading-9 tracking-[-0.03em] outline-none">
+        What does the meter say?
+      </h1>
+      <p className="mb-2 mt-0.5 text-[16px] leading-[22px] text-ink-2">{HOW_TO_MEASURE[place]}</p>
+      <details className="group mb-3 border-b border-t border-rule">
+        <summary className="flex min-h-[44px] cursor-pointer list-none items-center justify-between gap-3 py-1.5">
+          <span className="min-w-0 font-medium">
+            {`${capital(STAGE_WORDS[stage])}; ${METER_LABELS[meter]} of the meter`}
+          </span>
+          <span className="shrink-0 text-sm text-petrol underline underline-offset-[3px]">
+            <span className="group-open:hidden">Change</span>
+            <span className="hidden group-open:inline">Fold</span>
+          </span>
+        </summary>
+        <div className="space-y-2 pb-3">
+          <Segmented
+            look="bold"
+            name="stage"
+            label="Stage"
+            value={stage}
+            options={stages.map((value) => ({ value, label: STAGE_WORDS[value] }))}
+            onChange={(value: ReadingStage) => change({ stage: value, commanded: '' })}
+          />
+          <MeterInput value={view.meter} onChange={(value) => change({ meter: value })} />
+        </div>
+      </details>
+      <div>
+        <MeterPanel
+          key={`${string.id} ${place}`}
+          form={form}
+          faults={faults}
+          place={place}
+          then={placeAfter(place)}
+          asks={{ heard: false, meter: false }}
+          typed={(some) => change(viewChange(some), 'typed')}
+          choose={(some) => change(viewChange(some))}
+        />
+      </div>
+      <div className="mt-4 space-y-4">
+        <AnswerSheet answer={answer} question={question} waiting={waiting} faults={faults} />
+        {answer && read.around.siblings.length > 0 && (
+          <p className="text-sm text-ink-2">
+            {`Other strings used: ${read.around.siblings.map((s) => `${s.name} ${volts(s.voltageV)}`).join(', ')}, read under the same light.`}
+          </p>
+        )}
+        {unitType.kind !== 'shutdown_only' && (
+          <p className="text-sm text-ink-2">
+            {`${string.heard} of ${string.units} units had answered the roll call when this phone last heard.`}
+          </p>
+        )}
+        {answer && question && <ReadingScale answer={answer} question={question} />}
+        <RecordedReadings site={site} string={string} stage={stage} change={change} />
+        {cautions.map((caution) => {
+          const { strong, rest } = cautionParts(caution);
+          return (
+            <Caution key={caution} strong={strong}>
+              {rest}
+            </Caution>
+          );
+        })}
+        {answer && question && <ReadAloud text={aloud(answer, question)} link={false} />}
+        <WaitingPhotos phone={phone} photos={photos} progress={state.progress} />
+      </div>
+      <div className="sticky bottom-0 z-10 -mx-4 mt-4 border-t border-rule bg-film px-4 py-2">
+        {fault && (
+          <p role="alert" className="mb-2 font-medium text-rust-ink">
+            {fault}
+          </p>
+        )}
+        <div className="flex gap-2.5">
+          <Button
+            type="submit"
+            weight="primary"
+            className="min-h-[52px] flex-1"
+            disabled={places.length === 0 || saving || !phone}
+          >
+            {fixed ? 'Save the correction' : next ? `Save and go to ${next.name}` : 'Save and go to the list'}
+          </Button>
+          <PhotoButton
+            label={photos.length > 0 ? `Photo (${photos.length})` : 'Photo'}
+            onTaken={(f) => void photograph(f)}
+          />
+        </div>
+      </div>
+    </form>
+  );
+}
