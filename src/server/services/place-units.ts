@@ -176,6 +176,8 @@ function refuse(plan: PlacementPlan, options: PlaceOptions, stage: string, nowMs
     throw new AppError(only ? 'conflict' : 'invalid', {
       message: `Nothing was changed. ${first?.message ?? ''}${more}`,
       fields: plan.faults.map((f) => ({ field: `changes.${f.index}.${f.field}`, message: f.message })),
+      // of which kind each is: what may be done about it follows from that
+      current: plan.faults,
     });
   }
   const leaves = plan.moves.some((m) => m.before !== null) || plan.vacated.length > 0;

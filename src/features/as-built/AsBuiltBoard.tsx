@@ -1,0 +1,153 @@
+import { useQuery } from '@tanstack/react-query';
+import { useEffect, useMemo, useState } from 'react';
+import { Button, ButtonLink } from '../../components/ui/Button';
+import { Heading } from '../../components/ui/Heading';
+import { Notice } from '../../components/ui/Notice';
+import { queryClient } from '../../lib/query-client';
+import { useViewInUrl } from '../../lib/view-in-url';
+import type { AsBuilt, AsBuiltView, PartAdded } from '../../schemas/api/as-built';
+import { paths } from '../../schemas/paths';
+import { asBuiltFinding } from './finding';
+import { PartDialog, type Editing } from './PartDialog';
+import { PartsSheets } from './PartsSheets';
+import { asBuiltQuery } from './queries';
+import { EMPTY_DRAFT, isEmpty, type SlotsDraft } from './slots-draft';
+import { SlotsDialog } from './SlotsDialog';
+import { StringsSheet, VIEW_DEFAULTS } from './StringsSheet';
+import { TokenDialog } from './TokenDialog';
+
+interface Props {
+  initial: AsBuilt;
+  view: AsBuiltView;
+  mayWrite: boolean;
+  timeZones: readonly string[];
+}
+
+interface TokenFor {
+  logger: { id: string; serial: string; hasToken: boolean };
+  token: string | null;
+}
+
+/** The as-built of a site: what stands on it, each part with its form; what is typed is kept until it is saved. */
+export function AsBuiltBoard({ initial, view: initialView, mayWrite, timeZones }: Props) {
+  const client = queryClient();
+  const { data: built, error, refetch } = useQuery(asBuiltQuery(initial), client);
+  const [view, change] = useViewInUrl(initialView, VIEW_DEFAULTS);
+  const [editing, setEditing] = useState<Editing | null>(null);
+  const [token, setToken] = useState<TokenFor | null>(null);
+  const [drafts, setDrafts] = useState<Readonly<Record<string, SlotsDraft>>>({});
+  const site = built.site.id;
+  const finding = useMemo(() => asBuiltFinding(built), [built]);
+  const unsaved = useMemo(
+    () => new Set(Object.entries(drafts).flatMap(([id, draft]) => (isEmpty(draft) ? [] : [id]))),
+    [drafts],
+  );
+  const open = built.strings.find((s) => s.id === view.string);
+
+  useEffect(() => {
+    if (unsaved.size === 0) return;
+    const warn = (event: BeforeUnloadEvent) => event.preventDefault();
+    window.addEventListener('beforeunload', warn);
+    return () => window.removeEventListener('beforeunload', warn);
+  }, [unsaved]);
+
+  const saved = (of: Editing, added: PartAdded | null) => {
+    setEditing(null);
+    const [id] = added?.ids ?? [];
+    if (added?.token && id !== undefined)
+      setToken({ logger: { id, serial: 'just added', hasToken: true }, token: added.token });
+    else if (of.kind === 'string' && of.id === null && added?.ids.length === 1 && id !== undefined)
+      change({ string: id });
+  };
+
+  return (
+    <>
+      <Heading
+        crumbs={[
+          { label: 'Commissioning', href: paths.commissioning() },
+          { label: built.site.name, href: paths.commissioningSite(site) },
+          { label: 'As-built' },
+        ]}
+        finding={finding.heading}
+        sentence={finding.sentence}
+      />
+      <p className="sr-only" role="status">
+        {finding.heading}
+      </p>
+      <nav
+        aria-label="What the as-built is made and checked with"
+        className="no-print mb-6 flex flex-wrap gap-2"
+      >
+        {mayWrite && <ButtonLink href={paths.asBuiltImport(site)}>From a file or a paste</ButtonLink>}
+        {mayWrite && <ButtonLink href={paths.serials(site)}>Read serials on site</ButtonLink>}
+        <ButtonLink href={paths.roofPlan(site)}>Roof plan</ButtonLink>
+        <ButtonLink href={paths.designChecks(site)}>Design checks</ButtonLink>
+        <ButtonLink href={paths.asBuiltHistory(site)}>History</ButtonLink>
+      </nav>
+      {error && (
+        <div className="mb-6">
+          <Notice
+            kind="failed"
+            title="The as-built could not be read anew"
+            action={<Button onClick={() => void refetch()}>Try again</Button>}
+          >
+            {error.message} What is shown may be old.
+          </Notice>
+        </div>
+      )}
+      <div className="grid gap-5 lg:grid-cols-[minmax(0,1fr)_360px]">
+        <div className="min-w-0">
+          <StringsSheet
+            built={built}
+            view={view}
+            mayWrite={mayWrite}
+            unsaved={unsaved}
+            onView={change}
+            onOpen={(string) => change({ string })}
+            onAdd={() => setEditing({ kind: 'string', id: null })}
+          />
+        </div>
+        <PartsSheets
+          built={built}
+          mayWrite={mayWrite}
+          onEdit={setEditing}
+          onToken={(logger) => setToken({ logger, token: null })}
+        />
+      </div>
+      {open && !editing && (
+        <SlotsDialog
+          key={open.id}
+          built={built}
+          string={open}
+          draft={drafts[open.id] ?? EMPTY_DRAFT}
+          mayWrite={mayWrite}
+          onDraft={(draft) => setDrafts((old) => ({ ...old, [open.id]: draft }))}
+          onEditString={() => setEditing({ kind: 'string', id: open.id })}
+          onClose={() => change({ string: '' })}
+        />
+      )}
+      {editing && (
+        <PartDialog
+          key={`${editing.kind} ${editing.id ?? 'new'}`}
+          built={built}
+          editing={editing}
+          timeZones={timeZones}
+          onClose={() => setEditing(null)}
+          onSaved={saved}
+        />
+      )}
+      {token && (
+        <TokenDialog
+          site={site}
+          logger={{
+            ...token.logger,
+            serial: built.loggers.find((l) => l.id === token.logger.id)?.serial ?? token.logger.serial,
+          }}
+          operating={built.site.stage === 'operating'}
+          token={token.token}
+          onClose={() => setToken(null)}
+        />
+      )}
+    </>
+  );
+}

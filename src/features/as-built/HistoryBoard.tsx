@@ -1,0 +1,251 @@
+import { keepPreviousData, useInfiniteQuery } from '@tanstack/react-query';
+import { useDeferredValue } from 'react';
+import { Button, ButtonLink } from '../../components/ui/Button';
+import { Heading } from '../../components/ui/Heading';
+import { Notice } from '../../components/ui/Notice';
+import { SelectField } from '../../components/ui/SelectField';
+import { Sheet } from '../../components/ui/Sheet';
+import { SiteTime } from '../../components/ui/Time';
+import { counted } from '../../drawings/numbers';
+import { api, withQuery } from '../../lib/api';
+import { queryClient } from '../../lib/query-client';
+import { useViewInUrl } from '../../lib/view-in-url';
+import type { HistoryItem, HistoryPage, HistoryView, Stay } from '../../schemas/api/as-built';
+import { paths } from '../../schemas/paths';
+import { changedFields, historyTitle, sourceWords } from './history-words';
+
+export const HISTORY_DEFAULTS: HistoryView = { find: '', kind: 'all', person: '', string: '' };
+const KINDS = [
+  { value: 'all', label: 'Everything' },
+  { value: 'units', label: 'Units' },
+  { value: 'strings', label: 'Strings and slots' },
+  { value: 'parts', label: 'Other parts' },
+  { value: 'site', label: 'The site' },
+] as const;
+
+interface Props {
+  initial: HistoryPage;
+  view: HistoryView;
+}
+
+/** Who changed what of the as-built, when and why; a serial shows its whole life. */
+export function HistoryBoard({ initial, view: initialView }: Props) {
+  const client = queryClient();
+  const [view, change] = useViewInUrl(initialView, HISTORY_DEFAULTS);
+  const asked = useDeferredValue(view);
+  const { site } = initial;
+  const { data, error, fetchNextPage, hasNextPage, isFetchingNextPage, refetch } = useInfiniteQuery(
+    {
+      queryKey: ['as-built-history', site.id, asked],
+      queryFn: ({ pageParam, signal }) =>
+        api<HistoryPage>(paths.api.asBuiltHistory(site.id), {
+          query: { ...asked, before: pageParam },
+          signal,
+        }),
+      initialPageParam: null as number | null,
+      getNextPageParam: (last: HistoryPage) => last.before,
+      ...(JSON.stringify(asked) === JSON.stringify(initialView) && {
+        initialData: { pages: [initial], pageParams: [null] },
+      }),
+      placeholderData: keepPreviousData,
+    },
+    client,
+  );
+  const pages = data?.pages ?? [];
+  const items = pages.flatMap((p) => p.items);
+  const stays = pages[0]?.stays ?? [];
+  const [newest] = items;
+  const filtered = JSON.stringify(asked) !== JSON.stringify(HISTORY_DEFAULTS);
+  const finding = newest
+    ? `${historyTitle(newest)} by ${newest.person}`
+    : filtered
+      ? 'No change fits'
+      : 'Nothing has been changed here yet';
+  return (
+    <>
+      <Heading
+        crumbs={[
+          { label: 'Commissioning', href: paths.commissioning() },
+          { label: site.name, href: paths.commissioningSite(site.id) },
+          { label: 'As-built', href: paths.asBuilt(site.id) },
+          { label: 'History' },
+        ]}
+        finding={finding}
+        sentence={
+          newest ? (
+            <>
+              {filtered ? 'The newest that fits, ' : 'The newest change, '}
+              <SiteTime at={newest.at} now={initial.at} timeZone={site.timeZone} zone />
+              {newest.reason && <>: {newest.reason}</>}
+            </>
+          ) : (
+            'Every change of the as-built is kept with who made it, when and why.'
+          )
+        }
+      />
+      <div className="no-print mb-5 grid items-end gap-3 sm:grid-cols-2 lg:grid-cols-[1fr_180px_180px_180px_auto]">
+        <div>
+          <label htmlFor="find" className="mb-1 block font-medium">
+            Serial, name or reason
+          </label>
+          <input
+            id="find"
+            type="search"
+            autoComplete="off"
+            value={view.find}
+            onChange={(e) => change({ find: e.target.value }, 'typed')}
+            className="min-h-[44px] w-full rounded border border-rule bg-sheet px-3 text-[16px]"
+          />
+        </div>
+        <SelectField
+          label="What"
+          value={view.kind}
+          options={KINDS}
+          onChange={(e) => change({ kind: KINDS.find((k) => k.value === e.target.value)?.value ?? 'all' })}
+        />
+        <SelectField
+          label="String"
+          value={view.string}
+          options={[
+            { value: '', label: 'Every string' },
+            ...initial.strings.map((s) => ({ value: s.id, label: s.name })),
+          ]}
+          onChange={(e) => change({ string: e.target.value })}
+        />
+        <SelectField
+          label="Person"
+          value={view.person}
+          options={[
+            { value: '', label: 'Everybody' },
+            ...initial.people.map((p) => ({ value: p.id, label: p.name })),
+          ]}
+          onChange={(e) => change({ person: e.target.value })}
+        />
+        <ButtonLink href={withQuery(paths.api.asBuiltHistoryCsv(site.id), view)} download>
+          CSV
+        </ButtonLink>
+      </div>
+      {error && (
+        <div className="mb-5">
+          <Notice
+            kind="failed"
+            title="The history could not be read"
+            action={<Button onClick={() => void refetch()}>Try again</Button>}
+          >
+            {error.message}
+          </Notice>
+        </div>
+      )}
+      {stays.length > 0 && <Life stays={stays} page={initial} />}
+      <Sheet
+        id="changes"
+        title="Changes"
+        aside={`newest first, times in ${site.timeZone.replaceAll('_', ' ')}`}
+      >
+        {items.length === 0 ? (
+          <Notice
+            kind="empty"
+            title={filtered ? 'No change fits' : 'Nothing has been changed here yet'}
+            action={
+              filtered ? <Button onClick={() => change(HISTORY_DEFAULTS)}>Show everything</Button> : undefined
+            }
+          />
+        ) : (
+          <ol>
+            {items.map((item) => (
+              <Entry key={item.id} item={item} page={initial} />
+            ))}
+          </ol>
+        )}
+        {hasNextPage && (
+          <Button className="mt-4" onClick={() => void fetchNextPage()} disabled={isFetchingNextPage}>
+            {isFetchingNextPage ? 'Reading …' : 'Older changes'}
+          </Button>
+        )}
+      </Sheet>
+    </>
+  );
+}
+
+function Entry({ item, page }: { item: HistoryItem; page: HistoryPage }) {
+  const fields = changedFields(item);
+  const how = sourceWords(item.source);
+  return (
+    <li className="grid gap-x-5 border-b border-rule-faint py-2.5 last:border-b-0 sm:grid-cols-[150px_minmax(0,1fr)]">
+      <div className="text-sm text-ink-2">
+        <SiteTime at={item.at} now={page.at} timeZone={page.site.timeZone} />
+        <span className="block">{item.person}</span>
+      </div>
+      <div className="min-w-0">
+        <p className="font-medium">
+          {historyTitle(item)}
+          {how && <span className="font-normal text-ink-2">, {how}</span>}
+        </p>
+        {item.reason && <p className="text-ink-2">“{item.reason}”</p>}
+        {fields.length > 0 && (
+          <details className="mt-1" open={fields.length <= 3}>
+            <summary className="cursor-pointer py-1 text-sm text-ink-2">
+              {counted(fields.length, 'field')}
+            </summary>
+            <dl className="text-sm">
+              {fields.map((f) => (
+                <div key={f.label} className="flex flex-wrap gap-x-2">
+                  <dt className="text-ink-2">{f.label}</dt>
+                  <dd className="min-w-0">
+                    {f.before !== null && <span className="text-ink-2">{f.before} → </span>}
+                    {f.after}
+                  </dd>
+                </div>
+              ))}
+            </dl>
+          </details>
+        )}
+      </div>
+    </li>
+  );
+}
+
+/** A unit over its slots, oldest first. */
+function Life({ stays, page }: { stays: readonly Stay[]; page: HistoryPage }) {
+  const [first] = stays;
+  const last = stays.at(-1);
+  if (!first || !last) return null;
+  return (
+    <Sheet
+      id="life"
+      className="mb-5"
+      title={`${first.serial} ${last.to === null ? `sits in ${last.string}, position ${last.position}` : 'sits in no slot now'}`}
+      aside={first.unitType}
+    >
+      <ol>
+        {stays.map((stay) => (
+          <li
+            key={stay.from}
+            className="flex flex-wrap gap-x-5 border-b border-rule-faint py-2 last:border-b-0"
+          >
+            <span className="font-medium">
+              <a
+                className="text-petrol hover:underline"
+                href={`${paths.asBuilt(stay.siteId)}?string=${stay.stringId}`}
+              >
+                {stay.string}, position {stay.position}
+              </a>
+            </span>
+            {stay.siteId !== page.site.id && <span>{stay.site}</span>}
+            <span className="text-ink-2">
+              from <SiteTime at={stay.from} now={page.at} timeZone={page.site.timeZone} />
+              {stay.to === null ? (
+                ', still there'
+              ) : (
+                <>
+                  {' '}
+                  to <SiteTime at={stay.to} now={page.at} timeZone={page.site.timeZone} />
+                </>
+              )}
+            </span>
+          </li>
+        ))}
+      </ol>
+    </Sheet>
+  );
+}

@@ -1,0 +1,224 @@
+import type { ReactNode } from 'react';
+import { Button } from '../../components/ui/Button';
+import { Sheet } from '../../components/ui/Sheet';
+import { SiteTime } from '../../components/ui/Time';
+import {
+  PART_WORDS,
+  RULE_SETS,
+  SENSOR_KINDS,
+  STRUCTURES,
+  type PartKind,
+} from '../../domain/commissioning/as-built/parts';
+import { counted, power, quantity } from '../../drawings/numbers';
+import type { AsBuilt } from '../../schemas/api/as-built';
+import { nameOf } from '../../schemas/as-built-values';
+import type { Editing } from './PartDialog';
+
+interface Props {
+  built: AsBuilt;
+  mayWrite: boolean;
+  onEdit: (editing: Editing) => void;
+  onToken: (logger: { id: string; serial: string; hasToken: boolean }) => void;
+}
+
+const choice = (options: readonly { value: string; label: string }[], value: string): string =>
+  options.find((o) => o.value === value)?.label ?? value;
+
+/** One kind of part as a list: what each is, and a form behind it. */
+function Parts<T extends { id: string }>({
+  kind,
+  title,
+  rows,
+  name,
+  detail,
+  extra,
+  blocked,
+  mayWrite,
+  onEdit,
+}: {
+  kind: PartKind;
+  title: string;
+  rows: readonly T[];
+  name: (row: T) => string;
+  detail: (row: T) => ReactNode;
+  extra?: (row: T) => ReactNode;
+  /** Why none can be added yet. */
+  blocked?: string | null;
+} & Pick<Props, 'mayWrite' | 'onEdit'>) {
+  const words = PART_WORDS[kind];
+  return (
+    <Sheet id={`parts-${kind}`} title={title} level={3}>
+      {rows.length === 0 ? (
+        <p className="text-ink-2">{blocked ?? `No ${words.many} yet.`}</p>
+      ) : (
+        <ul>
+          {rows.map((row) => (
+            <li
+              key={row.id}
+              className="flex flex-wrap items-center justify-between gap-x-3 border-b border-rule-faint py-1.5 last:border-b-0"
+            >
+              <div className="min-w-0 flex-1 py-1">
+                <span className="font-medium">{name(row)}</span>
+                <span className="block text-sm text-ink-2">{detail(row)}</span>
+                {extra?.(row)}
+              </div>
+              {mayWrite && (
+                <button
+                  type="button"
+                  className="target px-2 text-petrol hover:underline"
+                  aria-label={`Edit ${words.one} ${name(row)}`}
+                  onClick={() => onEdit({ kind, id: row.id })}
+                >
+                  Edit
+                </button>
+              )}
+            </li>
+          ))}
+        </ul>
+      )}
+      {mayWrite && !blocked && (
+        <Button className="mt-3" onClick={() => onEdit({ kind, id: null })}>
+          Add {words.a}
+        </Button>
+      )}
+    </Sheet>
+  );
+}
+
+/** The site's facts, and everything that stands on it besides strings. */
+export function PartsSheets({ built, mayWrite, onEdit, onToken }: Props) {
+  const common = { mayWrite, onEdit };
+  const { site } = built;
+  const stringsOn = (test: (s: AsBuilt['strings'][number]) => boolean): string =>
+    counted(built.strings.filter(test).length, 'string');
+  return (
+    <div className="grid min-w-0 content-start gap-5 sm:grid-cols-2 lg:grid-cols-1">
+      <Parts
+        {...common}
+        kind="plane"
+        title="Planes"
+        rows={built.planes}
+        name={(p) => p.name}
+        detail={(p) =>
+          `tilt ${quantity(p.surfaceTilt, '°')}, azimuth ${quantity(p.surfaceAzimuth, '°')}; ${stringsOn((s) => s.plane === p.id)}`
+        }
+      />
+      <Parts
+        {...common}
+        kind="inverter"
+        title="Inverters"
+        rows={built.inverters}
+        name={(v) => v.name}
+        detail={(v) =>
+          `${v.inverterType === null ? 'type not in the catalogue' : nameOf(built, 'inverter_type', v.inverterType)}; ${power(v.acPowerMax)}, ${counted(v.inputs.length, 'input')}; ${stringsOn((s) => v.inputs.some((i) => i.id === s.input))}`
+        }
+      />
+      <Parts
+        {...common}
+        kind="logger"
+        title="Loggers"
+        rows={built.loggers}
+        name={(l) => l.serial}
+        detail={(l) => (
+          <>
+            {l.lastSpokeAt ? (
+              <>
+                last spoke <SiteTime at={l.lastSpokeAt} now={built.at} timeZone={site.timeZone} zone />
+              </>
+            ) : (
+              'has not spoken yet'
+            )}
+            ; {l.tokenAt === null ? 'no token' : 'has a token'}
+          </>
+        )}
+        extra={(l) =>
+          mayWrite && (
+            <button
+              type="button"
+              className="target text-petrol hover:underline"
+              onClick={() => onToken({ id: l.id, serial: l.serial, hasToken: l.tokenAt !== null })}
+            >
+              {l.tokenAt === null ? 'Make a token' : 'Make a new token'}
+            </button>
+          )
+        }
+      />
+      <Parts
+        {...common}
+        kind="transmitter"
+        title="Transmitters"
+        rows={built.transmitters}
+        name={(t) => t.name}
+        detail={(t) =>
+          `zone ${nameOf(built, 'zone', t.zone) ?? ''}; ${t.strings.length === 0 ? 'serves no string' : `serves ${t.strings.map((s) => nameOf(built, 'string', s)).join(', ')}`}`
+        }
+        blocked={built.zones.length === 0 ? 'A transmitter needs a zone first.' : null}
+      />
+      <Parts
+        {...common}
+        kind="initiator"
+        title="Initiators"
+        rows={built.initiators}
+        name={(i) => i.name}
+        detail={(i) => i.place || 'place not entered'}
+      />
+      <Parts
+        {...common}
+        kind="zone"
+        title="Zones"
+        rows={built.zones}
+        name={(z) => z.name}
+        detail={(z) =>
+          `${nameOf(built, 'initiator', z.initiator) ?? ''}; ${stringsOn((s) => s.zone === z.id)}`
+        }
+        blocked={built.initiators.length === 0 ? 'A zone needs an initiator first.' : null}
+      />
+      <Parts
+        {...common}
+        kind="sensor"
+        title="Sensors"
+        rows={built.sensors}
+        name={(s) => choice(SENSOR_KINDS, s.kind)}
+        detail={(s) =>
+          `number ${s.number} at ${nameOf(built, 'logger', s.logger) ?? ''}${s.plane === null ? '' : `; ${nameOf(built, 'plane', s.plane) ?? ''}`}`
+        }
+        blocked={built.loggers.length === 0 ? 'A sensor needs a logger first.' : null}
+      />
+      <Sheet id="parts-site" title="Site" level={3}>
+        <dl className="grid gap-2">
+          <Fact name="Place">
+            {site.place || 'not entered'}; {number(site.latitude)}°, {number(site.longitude)}°
+          </Fact>
+          <Fact name="Time zone">{site.timeZone}</Fact>
+          <Fact name="Rules">
+            {choice(RULE_SETS, site.ruleSet)}; {choice(STRUCTURES, site.structure).toLowerCase()}
+          </Fact>
+          <Fact name="Air, coldest and hottest">
+            {site.temperatureMin === null ? 'not entered' : quantity(site.temperatureMin, '°C')},{' '}
+            {site.temperatureMax === null ? 'not entered' : quantity(site.temperatureMax, '°C')}
+          </Fact>
+          <Fact name="Shutdown switch">{site.shutdownSwitchPlace || 'place not entered'}</Fact>
+          <Fact name="Contact">
+            {[site.contactName, site.contactPhone].filter((c) => c !== '').join(', ') || 'not entered'}
+          </Fact>
+        </dl>
+        {mayWrite && (
+          <Button className="mt-3" onClick={() => onEdit({ kind: 'site', id: site.id })}>
+            Edit the site
+          </Button>
+        )}
+      </Sheet>
+    </div>
+  );
+}
+
+const number = (value: number): string => String(value).replace('-', '−');
+
+function Fact({ name, children }: { name: string; children: ReactNode }) {
+  return (
+    <div>
+      <dt className="text-sm text-ink-2">{name}</dt>
+      <dd>{children}</dd>
+    </div>
+  );
+}
