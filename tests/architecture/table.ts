@@ -30,6 +30,7 @@ export const FEATURES = [
   'import',
   'serials',
   'roof',
+  'design',
 ] as const;
 const AREAS = FEATURES.map((name) => `src/features/${name}`);
 
