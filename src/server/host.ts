@@ -1,3 +1,4 @@
+import { createHash } from 'node:crypto';
 import fs from 'node:fs/promises';
 import path from 'node:path';
 import { fileURLToPath } from 'node:url';
@@ -23,6 +24,30 @@ async function compress(folder: string): Promise<void> {
     await fs.writeFile(`${file}.gz`, await gzip(content, { level: 9 }));
     await fs.writeFile(`${file}.br`, await brotli(content));
   }
+}
+
+/**
+ * The worker of the phone's page as one file at the root of the build. It carries a name made of the build's files, so
+ * that a browser takes the worker of another build for another one.
+ */
+async function buildWorker(client: string): Promise<void> {
+  const files = await fs.readdir(client, { recursive: true });
+  const pages = await fs.readdir(path.join(client, '../server'), { recursive: true });
+  const name = createHash('sha256')
+    .update([...files, ...pages].sort().join('\n'))
+    .digest('hex')
+    .slice(0, 16);
+  const { build } = await import('esbuild');
+  await build({
+    entryPoints: [fileURLToPath(new URL('../lib/capture-worker.ts', import.meta.url))],
+    outfile: path.join(client, 'capture-worker.js'),
+    bundle: true,
+    minify: true,
+    format: 'iife',
+    target: 'es2022',
+    define: { WAKELINE_BUILD: JSON.stringify(name) },
+    logLevel: 'warning',
+  });
 }
 
 /** @astrojs/node with our own server entry: one bundle, and the sockets of loggers and browsers in development too. */
@@ -68,7 +93,9 @@ export default function host(): AstroIntegration {
       },
       'astro:build:done': async (done) => {
         await base.hooks['astro:build:done']?.(done);
-        await compress(fileURLToPath(done.dir));
+        const client = fileURLToPath(done.dir);
+        await buildWorker(client);
+        await compress(client);
       },
     },
   };

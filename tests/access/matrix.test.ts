@@ -76,6 +76,8 @@ afterAll(async () => {
 });
 
 const targetOf = (name: string): Target => targets.get(name) ?? ABSENT;
+const bodyOf = (route: Route, target: Target): unknown =>
+  typeof route.body === 'function' ? (route.body as (target: Target) => unknown)(target) : route.body;
 function ask(route: Route, who: Role | 'signed out', target: Target): Promise<Response> {
   const cookie = who === 'signed out' ? undefined : cookies.get(who);
   return fetch(site.url + route.path(target), {
@@ -86,7 +88,7 @@ function ask(route: Route, who: Role | 'signed out', target: Target): Promise<Re
       ...(cookie ? { cookie } : {}),
       ...(route.body === undefined ? {} : { 'content-type': 'application/json' }),
     },
-    body: route.body === undefined ? undefined : JSON.stringify(route.body),
+    body: route.body === undefined ? undefined : JSON.stringify(bodyOf(route, target)),
   });
 }
 /** What the table of permissions says of it. */
@@ -173,7 +175,7 @@ describe('requests of another site', () => {
           cookie: cookies.get('manager') ?? '',
           'content-type': 'text/plain',
         },
-        body: JSON.stringify(route.body ?? {}),
+        body: JSON.stringify(bodyOf(route, targetOf(GIVEN)) ?? {}),
       });
       expect(response.status).toBe(403);
     },

@@ -2,7 +2,7 @@ import { createHash } from 'node:crypto';
 import { readFile } from 'node:fs/promises';
 import { mayUse, type Actor } from '../../domain/access/permissions';
 import { PHOTO_MAX_BYTES, type AttachmentItem, type AttachmentQuery } from '../../schemas/api/attachments';
-import type { Tx } from '../db/transaction';
+import { asActor, type Tx } from '../db/transaction';
 import { AppError, found } from '../errors';
 import { readPhoto } from '../files/photo';
 import { sniff } from '../files/sniff';
@@ -28,11 +28,17 @@ const refused = (message: string): AppError =>
 
 /**
  * Takes the body of a request as a photo, or as a document where evidence is sent. No transaction is open meanwhile:
- * a phone may take minutes.
- * @throws AppError too_large · invalid (what it is instead, and what to do)
+ * a phone may take minutes. Nothing is read for a site that the actor may not see.
+ * @throws AppError not_found · too_large · invalid (what it is instead, and what to do)
  */
-export const receiveFile = (request: Request, query: AttachmentQuery): Promise<ReceivedFile> =>
-  spooled(request, PHOTO_MAX_BYTES, async (file) => {
+export async function receiveFile(
+  actor: Actor,
+  siteRef: string,
+  request: Request,
+  query: AttachmentQuery,
+): Promise<ReceivedFile> {
+  await asActor(actor, async (tx) => found(await visibleSite(tx, siteRef), 'site'));
+  return spooled(request, PHOTO_MAX_BYTES, async (file) => {
     const { kind, fault } = sniff(file.head);
     if (kind === null) throw refused(`${query.name}: ${fault}`);
     if (kind !== 'pdf')
@@ -49,6 +55,7 @@ export const receiveFile = (request: Request, query: AttachmentQuery): Promise<R
       thumbnail: null,
     };
   });
+}
 
 /**
  * Keeps a file with what it belongs to; that may arrive later. The same identifier with the same file is kept once.

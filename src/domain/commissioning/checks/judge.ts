@@ -167,12 +167,7 @@ function insulation(figures: Figures, context: CheckContext): FigureWord[] {
       remedy: 'Look for damaged insulation and moisture, part the array and measure its parts.',
       source: LEAST_RESISTANCE_SOURCE,
     });
-  if (
-    test.allowed &&
-    volts > 0 &&
-    volts < Math.min(test.table.testVoltage, test.allowedV) &&
-    volts < test.table.testVoltage
-  )
+  if (test.allowed && volts > 0 && volts < test.table.testVoltage)
     words.push({
       weight: 'told',
       words: `${volts} V is less than the ${test.table.testVoltage} V that the table asks for at this string’s voltage.`,

@@ -56,7 +56,11 @@ export function readingAround(
   const siblings = sheet.strings
     .filter(
       (s) =>
-        s.id !== string.id && s.unitTypeId === string.unitTypeId && s.moduleTypeId === string.moduleTypeId,
+        s.id !== string.id &&
+        s.unitTypeId === string.unitTypeId &&
+        s.moduleTypeId === string.moduleTypeId &&
+        // a roll call that has reached one and not the other leaves them in different states
+        (unitType.kind === 'shutdown_only' || answered(s) === answered(string)),
     )
     .flatMap((s) =>
       s.readings

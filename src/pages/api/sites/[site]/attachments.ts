@@ -13,7 +13,12 @@ export const GET = endpoint({ permission: 'attachment.read', params: siteParams 
 });
 
 export const POST = endpoint(
-  { permission: 'checks.write', params: siteParams, query: attachmentQuery, receive: receiveFile },
+  {
+    permission: 'checks.write',
+    params: siteParams,
+    query: attachmentQuery,
+    receive: ({ actor, params, query, context }) => receiveFile(actor, params.site, context.request, query),
+  },
   async ({ tx, actor, params, query, received }) =>
     recordedReply(await storeAttachment(tx, actor, params.site, query, received, new Date())),
 );

@@ -1,0 +1,13 @@
+import { siteParams } from '../../../../schemas/api/site';
+import { endpoint } from '../../../../server/http/endpoint';
+import { checksCsv } from '../../../../server/reports/checks-csv';
+import { captureSnapshot } from '../../../../server/services/capture-snapshot';
+
+export const GET = endpoint(
+  { permission: 'checks.read', params: siteParams },
+  async ({ tx, actor, params, context }) => {
+    const { viewer } = context.locals;
+    const person = { id: viewer?.id ?? '', name: viewer?.name ?? '', role: actor.role };
+    return checksCsv(await captureSnapshot(tx, params.site, person, new Date()));
+  },
+);
