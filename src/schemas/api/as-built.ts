@@ -170,6 +170,10 @@ export const placementsBody = z.strictObject({
   move: z.boolean().default(false),
   retype: z.boolean().default(false),
   reason,
+  /** At a desk, or beside the unit. */
+  source: z.enum(['forms', 'on_site']).default('forms'),
+  /** When it was done on the roof, where the phone had no network then. */
+  at: time.optional(),
 });
 export type PlacementsBody = z.input<typeof placementsBody>;
 export const placed = z.object({

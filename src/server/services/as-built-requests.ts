@@ -65,15 +65,15 @@ export async function saveSlots(
   address: string | null,
 ): Promise<Placed> {
   const site = found(await visibleSite(tx, siteRef), 'site');
-  const { reason } = body;
+  const { reason, source } = body;
   const placed = await placeUnits(tx, actor, site.id, body.changes, {
-    at,
+    at: body.at === undefined ? at : new Date(body.at),
     reason,
-    source: 'forms',
+    source,
     move: body.move,
     retype: body.retype,
     address,
   });
-  await setSlotFacts(tx, actor, site.id, body.slots, { reason, source: 'forms', address });
+  await setSlotFacts(tx, actor, site.id, body.slots, { reason, source, address });
   return placed;
 }

@@ -217,7 +217,7 @@ export function readRows(
         suggestion
           ? `Is "${suggestion}" meant?`
           : some
-            ? `Known: ${some}${known.length > 5 ? ` and ${known.length - 5} more` : ''}. Say below which one is meant.`
+            ? `Known: ${some}${known.length > 5 ? ` and ${known.length - 5} more` : ''}. Say above which one is meant.`
             : `None is entered yet. Enter it on the ${c === 'unitType' || c === 'moduleType' ? 'equipment' : 'as-built'} page first.`,
         { suggestion },
       );

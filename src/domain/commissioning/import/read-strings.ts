@@ -193,8 +193,8 @@ export function readNewString(
       'string_unknown',
       `there is no string "${name}" here yet`,
       near
-        ? `Is "${near.name}" meant? Or choose below what new strings are made with.`
-        : 'Choose below what new strings are made with, or correct the name.',
+        ? `Is "${near.name}" meant? Or say above what new strings are made with.`
+        : 'Say above what new strings are made with, or correct the name.',
       { suggestion: near?.name ?? null },
     );
     return undefined;
@@ -205,7 +205,7 @@ export function readNewString(
       column,
       'string_incomplete',
       `new string ${name} has no ${COLUMN_LABELS[column]}`,
-      'Choose one for all new strings below, or give it in the file.',
+      'Choose one for all new strings above, or give it in the file.',
     );
     return undefined;
   };

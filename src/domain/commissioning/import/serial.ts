@@ -68,7 +68,7 @@ export function readSerial(text: string): ReadSerial {
     return fault('it has blanks in it', 'Type it without blanks, or check that it is one serial.', joined);
   if (strange !== '')
     return fault(
-      `it contains ${strange}`,
+      `it has ${strange} in it`,
       'Serials are letters A to Z, digits and dashes. Compare with the label on the unit.',
       joined,
     );
