@@ -9,7 +9,7 @@ let decoder: Decoder;
 beforeAll(async () => {
   const file = await readFile(createRequire(import.meta.url).resolve('zxing-wasm/reader/zxing_reader.wasm'));
   decoder = await shippedDecoder(
-    file.buffer.slice(file.byteOffset, file.byteOffset + file.byteLength) as ArrayBuffer,
+    file.buffer.slice(file.byteOffset, file.byteOffset + file.byteLength),
   );
 });
 

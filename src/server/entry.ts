@@ -1,6 +1,12 @@
 // The adapter's server entry: bundled by the build together with the pages, so that everything that the server
 // needs is in one module graph, once.
-import { createServer, type IncomingMessage, type Server, type ServerResponse } from 'node:http';
+import {
+  createServer,
+  type IncomingMessage,
+  type RequestListener,
+  type Server,
+  type ServerResponse,
+} from 'node:http';
 import { createExports as nodeExports } from '@astrojs/node/server.js';
 import type { SSRManifest } from 'astro';
 import sirv from 'sirv';
@@ -8,6 +14,7 @@ import { config } from './config';
 import { ERROR_KINDS } from './errors';
 import { log } from './log';
 import { refuseUpgrade, routeUpgrade, startRoles, stopRoles } from './roles';
+import { certificateFiles, secureServer } from './tls';
 
 type Handler = (req: IncomingMessage, res: ServerResponse) => Promise<void>;
 
@@ -19,6 +26,9 @@ export interface StartOptions {
 }
 export interface Running {
   server: Server;
+  scheme: 'http' | 'https';
+  /** Reads the certificate's files again; null where the site speaks plain HTTP. */
+  reloadCertificate: (() => void) | null;
   /** Ends in order: no new requests, loggers, browsers, jobs, database. */
   stop(): Promise<void>;
 }
@@ -99,12 +109,15 @@ async function startServer(handler: Handler, options: StartOptions): Promise<Run
       if (path.startsWith('/_astro/')) res.setHeader('Cache-Control', 'public, max-age=31536000, immutable');
     },
   });
-  const server = createServer((req, res) => {
+  const listener: RequestListener = (req, res) => {
     if (!settings.TRUST_PROXY) dropForwarded(req); // Astro believes them from anybody
     if (refuseEarly(req, res)) return;
     if (!isWeb) return answer(req, res, 404, 'This process serves no pages.');
     assets(req, res, () => void handler(req, res)); // without `next`: unknown paths get the 404 page
-  });
+  };
+  const files = certificateFiles(settings);
+  const secure = files && secureServer(files, listener);
+  const server: Server = secure?.server ?? createServer(listener);
   server.requestTimeout = 60_000;
   server.on('upgrade', (req, socket, head) => {
     if (!settings.TRUST_PROXY) dropForwarded(req);
@@ -119,7 +132,10 @@ async function startServer(handler: Handler, options: StartOptions): Promise<Run
   }
   return {
     server,
+    scheme: secure ? 'https' : 'http',
+    reloadCertificate: secure && secure.reload,
     stop: async () => {
+      secure?.forget();
       const closed = new Promise<void>((resolve) => server.close(() => resolve()));
       server.closeIdleConnections();
       const force = setTimeout(() => server.closeAllConnections(), 3000);

@@ -22,7 +22,9 @@ async function end() {
   await running?.stop();
   process.exit(0);
 }
-for (const signal of ['SIGINT', 'SIGTERM', 'SIGHUP']) process.on(signal, () => void end());
+for (const signal of ['SIGINT', 'SIGTERM']) process.on(signal, () => void end());
+// where the site speaks HTTPS, the signal by which certificate programs say that there is a new one
+process.on('SIGHUP', () => (running?.reloadCertificate ? running.reloadCertificate() : void end()));
 process.on('disconnect', () => void end()); // whoever started us is gone
 
 try {
@@ -30,7 +32,7 @@ try {
   running = await startServer({ client: at('dist/client/') });
   const { address, port } = running.server.address();
   process.send?.({ listening: { address, port } });
-  if (!process.send) process.stdout.write(`listening on http://${address}:${port}\n`);
+  if (!process.send) process.stdout.write(`listening on ${running.scheme}://${address}:${port}\n`);
 } catch (error) {
   process.stderr.write(
     `${error.code === 'EADDRINUSE' ? `The port is taken: ${error.message}` : (error.message ?? error)}\n`,

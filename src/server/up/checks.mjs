@@ -23,7 +23,7 @@ const STATIC = [
 
 // settings of the reader's shell are no part of a test
 const OURS =
-  /^(HOST|PORT|SIMULATOR_|COOKIE_SECURE|TRUST_PROXY|LOG_LEVEL|STUCK_GRACE_S|WAKELINE_ROLES|DATABASE_URL_|DATABASE_ONE_ROLE|NODE_ENV)/;
+  /^(HOST|PORT|SIMULATOR_|TLS_|COOKIE_SECURE|TRUST_PROXY|LOG_LEVEL|STUCK_GRACE_S|WAKELINE_ROLES|DATABASE_URL_|DATABASE_ONE_ROLE|NODE_ENV)/;
 const environment = () => ({
   ...Object.fromEntries(Object.entries(process.env).filter(([name]) => !OURS.test(name))),
   ASTRO_TELEMETRY_DISABLED: '1',

@@ -1,3 +1,5 @@
+import http from 'node:http';
+import https from 'node:https';
 import path from 'node:path';
 import process from 'node:process';
 import { buildIfStale } from './build.mjs';
@@ -82,6 +84,13 @@ function settings(stage, addresses, { host, port, simulatorPort, address, post }
   };
 }
 
+/** Asks a page for its head, whoever signed the certificate: it is our own site on this machine. */
+const knock = (url) =>
+  new Promise((resolve, reject) => {
+    const { get } = url.startsWith('https:') ? https : http;
+    get(url, { rejectUnauthorized: false }, (response) => resolve(response.resume())).on('error', reject);
+  });
+
 /** Waits until the site answers; ends early where the part dies first. */
 async function answers(url, died) {
   let gone;
@@ -89,8 +98,7 @@ async function answers(url, died) {
   for (let i = 0; i < 600; i++) {
     if (gone) return false;
     try {
-      const response = await fetch(url, { redirect: 'manual' });
-      await response.arrayBuffer();
+      await knock(url);
       return true;
     } catch {
       await new Promise((resolve) => setTimeout(resolve, 100));
@@ -102,7 +110,7 @@ async function answers(url, died) {
 const SIMULATOR_TRIES = 5;
 
 /** The simulator runs along; one that falls is started again, so that the site in view stays. Resolves when that is given up. */
-function launchSimulator(env, { reach, simulatorPort, stage }, atEnd) {
+function launchSimulator(env, { scheme, reach, simulatorPort, stage }, atEnd) {
   let simulator;
   let ending = false;
   atEnd(() => {
@@ -118,11 +126,12 @@ function launchSimulator(env, { reach, simulatorPort, stage }, atEnd) {
           DATABASE_URL: '', // it knows the plant by its own plan, and has no business in the database
           DATABASE_URL_APP: '',
           DATABASE_URL_INGEST: '',
-          WAKELINE_INGEST_URL: `ws://${reach}/ingest/v1`,
+          WAKELINE_INGEST_URL: `${scheme === 'https' ? 'wss' : 'ws'}://${reach}/ingest/v1`,
+          NODE_EXTRA_CA_CERTS: process.env.TLS_CERT || process.env.NODE_EXTRA_CA_CERTS, // it may be signed by itself
           WAKELINE_DEMO_SECRET: stage.state.demoSecret,
           WAKELINE_DEMO_SINCE: stage.state.demoSince ? String(stage.state.demoSince) : undefined,
           WAKELINE_SIM_STATE: path.join(stage.home, 'simulator.json'),
-          WAKELINE_URL: `http://${reach}/`,
+          WAKELINE_URL: `${scheme}://${reach}/`,
           SIMULATOR_PORT: String(simulatorPort),
         },
       });
@@ -210,7 +219,8 @@ async function bringUpDemo(args, atEnd, { prepare = () => Promise.resolve(), lau
   const port = portFrom('PORT', 4321);
   const simulatorPort = portFrom('SIMULATOR_PORT', 4322);
   const reach = `${host === '0.0.0.0' || host === '::' ? '127.0.0.1' : host}:${port}`;
-  const address = `http://${reach}/`;
+  const scheme = process.env.TLS_CERT ? 'https' : 'http';
+  const address = `${scheme}://${reach}/`;
   claimHome(homeOf('demo'), address, atEnd);
   await needPort('PORT', port, host);
   await needPort('SIMULATOR_PORT', simulatorPort, '127.0.0.1');
@@ -227,7 +237,7 @@ async function bringUpDemo(args, atEnd, { prepare = () => Promise.resolve(), lau
   const siteEnded = endOf(site, 'The site');
   say(stage.hasDemo ? 'starting the site and the simulator' : 'starting the site');
   const parts = [siteEnded];
-  if (stage.hasDemo) parts.push(launchSimulator(env, { reach, simulatorPort, stage }, atEnd));
+  if (stage.hasDemo) parts.push(launchSimulator(env, { scheme, reach, simulatorPort, stage }, atEnd));
   if (await answers(`${address}sign-in`, siteEnded))
     welcome(address, stage.hasDemo ? simulatorPort : undefined, elapsedS());
   const { name, code, signal } = await Promise.race([...parts, watchDatabase(stage, atEnd)]);
