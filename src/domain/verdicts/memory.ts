@@ -121,6 +121,24 @@ export function resetSlot(
   const fresh = newMemory({ slots: [context.slots[slot] ?? false], behaviour: context.behaviour });
   for (const key of PER_SLOT) memory[key][slot] = fresh[key][0]!;
 }
+/**
+ * The string has another number of slots: what is known of those that stay is kept, new ones begin unheard. What was
+ * concluded of the string as a whole is begun anew. Changes `memory`.
+ */
+export function resizeMemory(
+  memory: StringMemory,
+  context: Pick<StringContext, 'slots' | 'behaviour'>,
+): void {
+  const before = memory.state.length;
+  const fresh = newMemory(context);
+  for (const key of PER_SLOT)
+    memory[key] = fresh[key].map((value, slot) => (slot < before ? (memory[key][slot] ?? value) : value));
+  memory.sumV = 0;
+  memory.sumAtS = 0;
+  memory.pending = '';
+  memory.pendingCount = 0;
+}
+
 const PER_SLOT = [
   'state',
   'verdict',

@@ -9,7 +9,7 @@ import type { AsBuilt, AsBuiltView, PartAdded } from '../../schemas/api/as-built
 import { paths } from '../../schemas/paths';
 import { asBuiltFinding } from './finding';
 import { PartDialog, type Editing } from './PartDialog';
-import { PartsSheets } from './PartsSheets';
+import { PartsSheets, SiteSheets } from './PartsSheets';
 import { asBuiltQuery } from './queries';
 import { EMPTY_DRAFT, isEmpty, type SlotsDraft } from './slots-draft';
 import { SlotsDialog } from './SlotsDialog';
@@ -96,7 +96,8 @@ export function AsBuiltBoard({ initial, view: initialView, mayWrite, timeZones }
         </div>
       )}
       <div className="grid gap-5 lg:grid-cols-[minmax(0,1fr)_360px]">
-        <div className="min-w-0">
+        {/* on a phone what strings name comes between the strings and the rest */}
+        <div className="contents min-w-0 content-start gap-5 lg:grid">
           <StringsSheet
             built={built}
             view={view}
@@ -104,15 +105,20 @@ export function AsBuiltBoard({ initial, view: initialView, mayWrite, timeZones }
             unsaved={unsaved}
             onView={change}
             onOpen={(string) => change({ string })}
-            onAdd={() => setEditing({ kind: 'string', id: null })}
+            onAdd={(kind) => setEditing({ kind, id: null })}
+          />
+          <div className="order-3 grid gap-5 sm:grid-cols-2">
+            <SiteSheets built={built} mayWrite={mayWrite} onEdit={setEditing} />
+          </div>
+        </div>
+        <div className="order-2 grid min-w-0 content-start gap-5 sm:grid-cols-2 lg:order-none lg:grid-cols-1">
+          <PartsSheets
+            built={built}
+            mayWrite={mayWrite}
+            onEdit={setEditing}
+            onToken={(logger) => setToken({ logger, token: null })}
           />
         </div>
-        <PartsSheets
-          built={built}
-          mayWrite={mayWrite}
-          onEdit={setEditing}
-          onToken={(logger) => setToken({ logger, token: null })}
-        />
       </div>
       {open && !editing && (
         <SlotsDialog

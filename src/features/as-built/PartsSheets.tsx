@@ -85,14 +85,16 @@ function Parts<T extends { id: string }>({
   );
 }
 
-/** The site's facts, and everything that stands on it besides strings. */
+const stringsOn = (built: AsBuilt, test: (s: AsBuilt['strings'][number]) => boolean): string =>
+  counted(built.strings.filter(test).length, 'string');
+const degrees = (value: number): string => `${String(value).replace('-', '−')}°`;
+
+/** What strings name: planes, inverters, loggers, transmitters. */
 export function PartsSheets({ built, mayWrite, onEdit, onToken }: Props) {
   const common = { mayWrite, onEdit };
   const { site } = built;
-  const stringsOn = (test: (s: AsBuilt['strings'][number]) => boolean): string =>
-    counted(built.strings.filter(test).length, 'string');
   return (
-    <div className="grid min-w-0 content-start gap-5 sm:grid-cols-2 lg:grid-cols-1">
+    <>
       <Parts
         {...common}
         kind="plane"
@@ -100,7 +102,7 @@ export function PartsSheets({ built, mayWrite, onEdit, onToken }: Props) {
         rows={built.planes}
         name={(p) => p.name}
         detail={(p) =>
-          `tilt ${quantity(p.surfaceTilt, '°')}, azimuth ${quantity(p.surfaceAzimuth, '°')}; ${stringsOn((s) => s.plane === p.id)}`
+          `tilt ${degrees(p.surfaceTilt)}, azimuth ${degrees(p.surfaceAzimuth)}; ${stringsOn(built, (s) => s.plane === p.id)}`
         }
       />
       <Parts
@@ -110,7 +112,7 @@ export function PartsSheets({ built, mayWrite, onEdit, onToken }: Props) {
         rows={built.inverters}
         name={(v) => v.name}
         detail={(v) =>
-          `${v.inverterType === null ? 'type not in the catalogue' : nameOf(built, 'inverter_type', v.inverterType)}; ${power(v.acPowerMax)}, ${counted(v.inputs.length, 'input')}; ${stringsOn((s) => v.inputs.some((i) => i.id === s.input))}`
+          `${v.inverterType === null ? 'type not in the catalogue' : nameOf(built, 'inverter_type', v.inverterType)}; ${power(v.acPowerMax)}, ${counted(v.inputs.length, 'input')}; ${stringsOn(built, (s) => v.inputs.some((i) => i.id === s.input))}`
         }
       />
       <Parts
@@ -154,6 +156,16 @@ export function PartsSheets({ built, mayWrite, onEdit, onToken }: Props) {
         }
         blocked={built.zones.length === 0 ? 'A transmitter needs a zone first.' : null}
       />
+    </>
+  );
+}
+
+/** What shuts the site down, what senses, and the site's own facts. */
+export function SiteSheets({ built, mayWrite, onEdit }: Omit<Props, 'onToken'>) {
+  const common = { mayWrite, onEdit };
+  const { site } = built;
+  return (
+    <>
       <Parts
         {...common}
         kind="initiator"
@@ -169,7 +181,7 @@ export function PartsSheets({ built, mayWrite, onEdit, onToken }: Props) {
         rows={built.zones}
         name={(z) => z.name}
         detail={(z) =>
-          `${nameOf(built, 'initiator', z.initiator) ?? ''}; ${stringsOn((s) => s.zone === z.id)}`
+          `${nameOf(built, 'initiator', z.initiator) ?? ''}; ${stringsOn(built, (s) => s.zone === z.id)}`
         }
         blocked={built.initiators.length === 0 ? 'A zone needs an initiator first.' : null}
       />
@@ -187,7 +199,7 @@ export function PartsSheets({ built, mayWrite, onEdit, onToken }: Props) {
       <Sheet id="parts-site" title="Site" level={3}>
         <dl className="grid gap-2">
           <Fact name="Place">
-            {site.place || 'not entered'}; {number(site.latitude)}°, {number(site.longitude)}°
+            {site.place || 'not entered'}; {degrees(site.latitude)}, {degrees(site.longitude)}
           </Fact>
           <Fact name="Time zone">{site.timeZone}</Fact>
           <Fact name="Rules">
@@ -208,11 +220,9 @@ export function PartsSheets({ built, mayWrite, onEdit, onToken }: Props) {
           </Button>
         )}
       </Sheet>
-    </div>
+    </>
   );
 }
-
-const number = (value: number): string => String(value).replace('-', '−');
 
 function Fact({ name, children }: { name: string; children: ReactNode }) {
   return (

@@ -7,6 +7,7 @@ import { Table, type Column } from '../../components/ui/Table';
 import type { AsBuilt, AsBuiltView, StringBuilt } from '../../schemas/api/as-built';
 import { nameOf } from '../../schemas/as-built-values';
 import { paths } from '../../schemas/paths';
+import { PART_WORDS, type PartKind } from '../../domain/commissioning/as-built/parts';
 import { gapsOf, listed, listedStrings, missingForStrings } from './finding';
 import { SlotsStrip } from './SlotsStrip';
 
@@ -24,7 +25,7 @@ interface Props {
   unsaved: ReadonlySet<string>;
   onView: (some: Partial<AsBuiltView>, how?: 'typed' | 'chosen') => void;
   onOpen: (string: string) => void;
-  onAdd: () => void;
+  onAdd: (kind: PartKind) => void;
 }
 
 /** Every string of the site, with the slots that have a serial and those that don't. */
@@ -78,12 +79,7 @@ export function StringsSheet({ built, view, mayWrite, unsaved, onView, onOpen, o
     { key: 'zone', label: 'Zone', from: 'lg', cell: (s) => nameOf(built, 'zone', s.zone) },
   ];
   return (
-    <Sheet
-      id="strings"
-      title="Strings"
-      flush
-      aside={mayWrite && missing.length > 0 ? <>needs {listed(missing)}</> : undefined}
-    >
+    <Sheet id="strings" title="Strings" flush>
       {built.strings.length > 0 && (
         <div className="no-print mb-3 flex flex-wrap items-center gap-x-5 gap-y-2">
           <input
@@ -125,14 +121,28 @@ export function StringsSheet({ built, view, mayWrite, unsaved, onView, onOpen, o
       ) : (
         <Notice kind="empty" title="No strings yet">
           {missing.length > 0
-            ? `Enter ${listed(missing)} first: a string names them.`
+            ? `Enter ${listed(missing.map((m) => m.words))} first: a string names them.`
             : 'Several alike are entered at once: their names are counted up.'}
         </Notice>
       )}
       {mayWrite && (
-        <Button weight="primary" className="mt-4" onClick={onAdd} disabled={missing.length > 0}>
-          Add strings
-        </Button>
+        <div className="mt-4 flex flex-wrap gap-2">
+          {missing
+            .flatMap((m) => m.add)
+            .map((kind) => (
+              <Button key={kind} weight="primary" onClick={() => onAdd(kind)}>
+                Add {PART_WORDS[kind].a}
+              </Button>
+            ))}
+          {missing.some((m) => m.add.length === 0) && (
+            <ButtonLink href={paths.equipment()}>Open the catalogue</ButtonLink>
+          )}
+          {missing.length === 0 && (
+            <Button weight="primary" onClick={() => onAdd('string')}>
+              Add strings
+            </Button>
+          )}
+        </div>
       )}
     </Sheet>
   );

@@ -1,4 +1,4 @@
-import { reports } from '../../domain/commissioning/as-built/parts';
+import { reports, type PartKind } from '../../domain/commissioning/as-built/parts';
 import { counted, number } from '../../drawings/numbers';
 import type { AsBuilt, AsBuiltView, StringBuilt } from '../../schemas/api/as-built';
 import { nameOf } from '../../schemas/as-built-values';
@@ -14,7 +14,7 @@ export function asBuiltFinding(built: Omit<AsBuilt, 'at'>): { heading: string; s
       heading: 'No strings are drawn yet',
       sentence:
         missing.length > 0
-          ? `Before a string can be entered, this site needs ${listed(missing)}.`
+          ? `Before a string can be entered, this site needs ${listed(missing.map((m) => m.words))}.`
           : 'Add strings here, or read them from a file.',
     };
   }
@@ -42,19 +42,29 @@ export function asBuiltFinding(built: Omit<AsBuilt, 'at'>): { heading: string; s
   };
 }
 
+export interface Missing {
+  words: string;
+  /** What is added here to have it; null: in the catalogue. */
+  add: PartKind[];
+}
+
 /** What a site needs before a string can stand on it. */
-export function missingForStrings(built: Omit<AsBuilt, 'at'>): string[] {
+export function missingForStrings(built: Omit<AsBuilt, 'at'>): Missing[] {
   const { unitTypes, moduleTypes } = built.catalogue;
-  const needs: string[] = [];
-  if (!unitTypes.some((t) => !t.archived)) needs.push('a unit type in the catalogue');
-  if (!moduleTypes.some((t) => !t.archived)) needs.push('a module type in the catalogue');
-  if (built.planes.length === 0) needs.push('a plane');
-  if (built.inverters.length === 0) needs.push('an inverter');
-  if (built.zones.length === 0) needs.push('a zone');
+  const needs: Missing[] = [];
+  if (!unitTypes.some((t) => !t.archived)) needs.push({ words: 'a unit type in the catalogue', add: [] });
+  if (!moduleTypes.some((t) => !t.archived)) needs.push({ words: 'a module type in the catalogue', add: [] });
+  if (built.planes.length === 0) needs.push({ words: 'a plane', add: ['plane'] });
+  if (built.inverters.length === 0) needs.push({ words: 'an inverter', add: ['inverter'] });
+  if (built.zones.length === 0) needs.push({ words: 'a zone', add: ['zone'] });
   const kinds = unitTypes.filter((t) => !t.archived).map((t) => t.kind);
   const onlyMute = kinds.length > 0 && kinds.every((k) => !reports(k));
   if (built.loggers.length === 0 && built.transmitters.length === 0)
-    needs.push(onlyMute ? 'a transmitter' : 'a logger or a transmitter');
+    needs.push(
+      onlyMute
+        ? { words: 'a transmitter', add: ['transmitter'] }
+        : { words: 'a logger or a transmitter', add: ['logger', 'transmitter'] },
+    );
   return needs;
 }
 

@@ -12,7 +12,7 @@ import {
 import { UNCHANGED, type JudgeOutcome } from '../../domain/verdicts/evidence';
 import { judgeFrame, sweepString } from '../../domain/verdicts/judge';
 import type { JudgedFrame } from '../../domain/verdicts/observe';
-import { newMemory, resetSlot, type StringMemory } from '../../domain/verdicts/memory';
+import { newMemory, resetSlot, resizeMemory, type StringMemory } from '../../domain/verdicts/memory';
 import { config } from '../config';
 import type { KeptJudgement } from '../queries/judgement';
 import type { JudgedSite, JudgedString } from '../queries/judgement-contexts';
@@ -66,15 +66,14 @@ export class SiteJudge {
     for (const string of site.strings) {
       const context = this.contextOf(string);
       const before = memories.get(string.id);
-      const usable = before && before.memory.state.length === string.serials.length;
       const judged: JudgedNow = {
         string,
         context,
-        memory: usable ? before.memory : newMemory(context),
+        memory: before?.memory ?? newMemory(context),
         evidence: {},
-        dirty: !usable,
+        dirty: !before,
       };
-      if (usable) this.exchange(judged, before.serials);
+      if (before) this.exchange(judged, before.serials);
       this.strings.set(string.id, judged);
     }
   }
@@ -92,7 +91,7 @@ export class SiteJudge {
     for (const string of site.strings) {
       const context = this.contextOf(string);
       const old = before.get(string.id);
-      if (!old || old.string.serials.length !== string.serials.length) {
+      if (!old) {
         this.strings.set(string.id, {
           string,
           context,
@@ -121,7 +120,7 @@ export class SiteJudge {
     const judged = this.strings.get(stringId);
     if (!judged || frame.atS < judged.memory.atS) return null;
     judged.dirty = true;
-    return taken(judged, judgeFrame(judged.memory, judged.context, frame));
+    return taken(judged, judgeFrame(judged.memory, judged.context, ofItsUnits(judged.string, frame)));
   }
 
   sweep(judged: JudgedNow, nowS: number): Outcome | null {
@@ -160,6 +159,12 @@ export class SiteJudge {
   }
 
   private exchange(judged: JudgedNow, before: readonly (string | null)[]): void {
+    if (judged.memory.state.length !== judged.string.serials.length) {
+      resizeMemory(judged.memory, judged.context);
+      for (const position of Object.keys(judged.evidence))
+        if (Number(position) > judged.string.serials.length) delete judged.evidence[Number(position)];
+      judged.dirty = true;
+    }
     judged.string.serials.forEach((serial, slot) => {
       if (serial === (before[slot] ?? null)) return;
       resetSlot(judged.memory, judged.context, slot);
@@ -181,6 +186,15 @@ export class SiteJudge {
       this.lightUntilS,
     );
   }
+}
+
+/** A frame without what was reported from a slot before its unit came there: that is another's. */
+function ofItsUnits(string: JudgedString, frame: JudgedFrame): JudgedFrame {
+  if (string.newestPlacedS <= frame.atS) return frame;
+  return {
+    ...frame,
+    state: frame.state.map((claim, slot) => ((string.placedAtS[slot] ?? 0) > frame.atS ? null : claim)),
+  };
 }
 
 /** Books the evidence of what changed; null where nothing did. */

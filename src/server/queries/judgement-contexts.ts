@@ -17,6 +17,10 @@ export interface JudgedString {
   serials: (string | null)[];
   /** Epoch seconds; 0: not yet heard. */
   heardAtS: number[];
+  /** Since when each slot's unit sits there, epoch seconds; 0: no unit there. */
+  placedAtS: number[];
+  /** The newest of them. */
+  newestPlacedS: number;
 }
 
 export interface JudgedSite {
@@ -47,10 +51,11 @@ export async function judgedSite(db: Knex, siteId: number): Promise<JudgedSite |
   );
   const site = sites.rows[0];
   if (!site) return undefined;
-  const strings = await db.raw<{ rows: JudgedString[] }>(
+  const strings = await db.raw<{ rows: Omit<JudgedString, 'newestPlacedS'>[] }>(
     `with s as (select * from string where site_id = :siteId),
      placed as (
-       select slot.string_id, slot.position, u.serial, extract(epoch from h.first_heard_at)::int4 as heard
+       select slot.string_id, slot.position, u.serial, extract(epoch from h.first_heard_at)::int4 as heard,
+         ceil(extract(epoch from p.placed_from))::int4 as since
        from slot join placement p on p.slot_id = slot.id and p.placed_to is null join unit u on u.id = p.unit_id
          left join heard h on h.site_id = slot.site_id and h.serial = u.serial
        where slot.site_id = :siteId)
@@ -60,7 +65,9 @@ export async function judgedSite(db: Knex, siteId: number): Promise<JudgedSite |
        (select array_agg(placed.serial order by n) from generate_series(1, s.slots) n
           left join placed on placed.string_id = s.id and placed.position = n) as serials,
        (select array_agg(coalesce(placed.heard, 0) order by n) from generate_series(1, s.slots) n
-          left join placed on placed.string_id = s.id and placed.position = n) as "heardAtS"
+          left join placed on placed.string_id = s.id and placed.position = n) as "heardAtS",
+       (select array_agg(coalesce(placed.since, 0) order by n) from generate_series(1, s.slots) n
+          left join placed on placed.string_id = s.id and placed.position = n) as "placedAtS"
      from s order by s.id`,
     { siteId },
   );
@@ -98,7 +105,7 @@ export async function judgedSite(db: Knex, siteId: number): Promise<JudgedSite |
   }
   return {
     ...site,
-    strings: strings.rows,
+    strings: strings.rows.map((s) => ({ ...s, newestPlacedS: Math.max(0, ...s.placedAtS) })),
     behaviours: new Map(
       types.rows.map(({ id, nominal, min, max, ...type }) => [
         id,

@@ -239,7 +239,9 @@ export async function hearReportingUnits(
          st.signal[slot.position], coalesce(st.voltage[slot.position], st.voltage_in[slot.position]), st.current[slot.position]
        from string_state st join string s on s.id = st.string_id join slot on slot.string_id = s.id
          join placement p on p.slot_id = slot.id and p.placed_to is null join unit u on u.id = p.unit_id
-       where st.string_id = any ($1::int4[]) and s.logger_id is not null and st.seen[slot.position] > 0
+       where st.string_id = any ($1::int4[]) and s.logger_id is not null
+         -- what was reported from there before this unit came is another's
+         and st.seen[slot.position] >= extract(epoch from p.placed_from)
          and st.via[slot.position] is not null
        order by u.serial
        on conflict do nothing returning site_id, serial, first_heard_at)

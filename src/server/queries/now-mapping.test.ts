@@ -51,6 +51,7 @@ const row = (more: Partial<StringRow> = {}): StringRow => ({
   positions: Array.from({ length: 10 }, (_, i) => i + 1),
   serials: fill('4E02-77A1-09'),
   roofPlaces: fill('upper row'),
+  placedAt: fill(1),
   moduleTypeId: 1,
   measures: 'output',
   shutdownVoltage: 0.6,

@@ -95,15 +95,19 @@ function slotsOf(row: StringRow, gateways: ReadonlyMap<string, string>): SlotNow
   return row.positions.map((position, nth): SlotNow => {
     const i = position - 1;
     const serial = row.serials[nth] ?? null;
+    // what was reported from this slot before its unit came there is another's
+    const own = (row.seen?.[i] ?? 0) >= (row.placedAt[nth] ?? 0);
     const stateCode = row.state?.[i] ?? null;
     const verdictCode = row.verdict?.[i] ?? null;
     const told = serial !== null && row.kind !== 'shutdown_only';
-    const seenAt = row.seen?.[i] ?? 0;
+    const seenAt = own ? (row.seen?.[i] ?? 0) : 0;
     const state = told ? (stateCode === null ? 'unheard' : (UNIT_STATES[stateCode] ?? null)) : null;
-    const voltage = measuresOutput ? scaled(row.voltage?.[i], 100) : null;
-    const voltageIn = scaled(row.voltageIn?.[i] ?? (row.measures === 'input' ? row.voltage?.[i] : null), 100);
-    const current = scaled(row.current?.[i], 1000);
-    const via = row.via?.[i] ?? null;
+    const voltage = measuresOutput && own ? scaled(row.voltage?.[i], 100) : null;
+    const voltageIn = own
+      ? scaled(row.voltageIn?.[i] ?? (row.measures === 'input' ? row.voltage?.[i] : null), 100)
+      : null;
+    const current = own ? scaled(row.current?.[i], 1000) : null;
+    const via = own ? (row.via?.[i] ?? null) : null;
     return {
       position,
       serial,
@@ -115,9 +119,11 @@ function slotsOf(row: StringRow, gateways: ReadonlyMap<string, string>): SlotNow
       voltage,
       voltageIn,
       current,
-      power: scaled(row.power?.[i], 10) ?? (voltage !== null && current !== null ? voltage * current : null),
-      temperature: scaled(row.temperature?.[i], 10),
-      signal: row.signal?.[i] ?? null,
+      power:
+        (own ? scaled(row.power?.[i], 10) : null) ??
+        (voltage !== null && current !== null ? voltage * current : null),
+      temperature: own ? scaled(row.temperature?.[i], 10) : null,
+      signal: own ? (row.signal?.[i] ?? null) : null,
       gateway:
         via === null || row.loggerId === null
           ? null

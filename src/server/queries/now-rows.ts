@@ -17,6 +17,8 @@ export interface StringRow {
   positions: number[];
   serials: (string | null)[];
   roofPlaces: string[];
+  /** Since when each slot's unit sits there, epoch s; 0: no unit there. */
+  placedAt: number[];
   moduleTypeId: number;
   measures: UnitType['measures'];
   shutdownVoltage: number;
@@ -123,6 +125,7 @@ export async function nowRows(
        select sl.string_id, array_agg(sl.position order by sl.position) as positions,
               array_agg(u.serial order by sl.position) as serials,
               array_agg(sl.roof_place order by sl.position) as roof_places,
+              array_agg(coalesce(extract(epoch from p.placed_from)::int4, 0) order by sl.position) as placed_at,
               min(sl.module_type_id) as module_type_id
        from slot sl
        left join placement p on p.slot_id = sl.id and p.placed_to is null
@@ -133,7 +136,8 @@ export async function nowRows(
      select s.id, s.ref, s.site_id as "siteId", s.name, s.kind, s.logger_id as "loggerId", s.plane_id as "planeId",
             s.input_id as "inputId", s.zone_id as "zoneId",
             coalesce(placed.positions, '{}') as positions, coalesce(placed.serials, '{}') as serials,
-            coalesce(placed.roof_places, '{}') as "roofPlaces", placed.module_type_id as "moduleTypeId",
+            coalesce(placed.roof_places, '{}') as "roofPlaces",
+            coalesce(placed.placed_at, '{}') as "placedAt", placed.module_type_id as "moduleTypeId",
             ut.measures, ut.shutdown_voltage_nominal as "shutdownVoltage", ut.bypass_voltage as "bypassVoltage",
             inv.name as inverter, i.number as "inputNumber", shared.strings as "inputStrings",
             ist.voltage as "inputVoltage", ist.current as "inputCurrent", ist.at as "inputAt",
