@@ -1,0 +1,77 @@
+import { useState } from 'react';
+import { Button } from '../../components/ui/Button';
+import { Field } from '../../components/ui/Field';
+import type { Entry, WalkString } from './model';
+
+interface Props {
+  clashes: readonly Entry[];
+  strings: readonly WalkString[];
+  onInsist: (key: string, reason: string) => void;
+  onDrop: (key: string) => void;
+}
+
+/** What the server would not take as it was: somebody else was there, or the unit sits elsewhere. */
+export function ClashList({ clashes, strings, onInsist, onDrop }: Props) {
+  return (
+    <ul className="grid gap-3">
+      {clashes.map((entry) => (
+        <Clash
+          key={entry.key}
+          entry={entry}
+          place={`${strings.find((s) => s.id === entry.string)?.name ?? 'a string that is gone'}, position ${entry.position}`}
+          onInsist={onInsist}
+          onDrop={onDrop}
+        />
+      ))}
+    </ul>
+  );
+}
+
+function Clash({
+  entry,
+  place,
+  onInsist,
+  onDrop,
+}: {
+  entry: Entry;
+  place: string;
+  onInsist: Props['onInsist'];
+  onDrop: Props['onDrop'];
+}) {
+  const [reason, setReason] = useState('');
+  const [fault, setFault] = useState<string | null>(null);
+  return (
+    <li role="alert" className="border border-rust bg-rust-wash p-4 text-[15px] text-rust-ink">
+      <p className="font-medium">
+        {entry.serial ?? 'Empty'} at {place} was not kept.
+      </p>
+      <p>{entry.clash?.message}</p>
+      {entry.clash?.kind !== 'other' && (
+        <Field
+          className="mt-3 text-ink"
+          label="Why yours is right"
+          value={reason}
+          onChange={(event) => {
+            setReason(event.target.value);
+            setFault(null);
+          }}
+          error={fault}
+        />
+      )}
+      <div className="mt-3 flex flex-wrap gap-2">
+        {entry.clash?.kind !== 'other' && (
+          <Button
+            onClick={() =>
+              reason.trim().length < 3
+                ? setFault('Say why, in a few words: it stays in the history.')
+                : onInsist(entry.key, reason.trim())
+            }
+          >
+            Put {entry.serial ?? 'it'} there
+          </Button>
+        )}
+        <Button onClick={() => onDrop(entry.key)}>Leave it as it is</Button>
+      </div>
+    </li>
+  );
+}
