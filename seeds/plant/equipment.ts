@@ -1,88 +1,105 @@
 import type { Knex } from 'knex';
+import type { EquipmentFamily } from '../../src/domain/equipment/families';
+import type { Entry } from '../../src/domain/equipment/fields';
+import { MODULE_DEFAULTS } from '../../src/domain/equipment/module-fields';
+import { FIELDS } from '../../src/domain/equipment/plausibility';
+import { starterEquipment } from '../../src/domain/equipment/starter';
+import { entryOfUnit } from '../../src/domain/equipment/unit-fields';
+import { EQUIPMENT_TABLES } from '../../src/server/queries/equipment';
 import type { OrganisationPlan } from '../../simulator/plant/plan';
-import { namedIds } from './rows';
+import { insertRows, known, namedIds } from './rows';
 
-/** The organisation's catalogue; numbers by name. */
+export interface SeededEquipment {
+  moduleTypes: Map<string, number>;
+  unitTypes: Map<string, number>;
+  inverterTypes: Map<string, number>;
+  connectorTypes: Map<string, number>;
+}
+
+/** Entries by name: those of the plan, which stand on its roofs, and then the rest of the starter set. */
+function withStarter(planned: readonly Entry[], starter: readonly Entry[]): Entry[] {
+  const named = new Map(starter.map((e) => [e.name, e]));
+  return [
+    ...planned.map((e): Entry => ({ ...(named.get(e.name ?? '') ?? {}), ...e })),
+    ...starter.filter((e) => !planned.some((p) => p.name === e.name)),
+  ];
+}
+
+async function seedFamily(
+  db: Knex,
+  family: EquipmentFamily,
+  organisationId: number,
+  entries: readonly Entry[],
+  connectors: ReadonlyMap<string, number>,
+): Promise<Map<string, number>> {
+  const columns: Record<string, string> = { organisation_id: 'int4' };
+  for (const f of FIELDS[family])
+    columns[f.column] =
+      f.kind === 'connector' ? 'int4' : f.kind === 'number' ? (f.whole ? 'int2' : 'real') : 'text';
+  const rows = entries.map((entry) => ({
+    organisation_id: organisationId,
+    ...Object.fromEntries(
+      FIELDS[family].map((f) => {
+        const value = entry[f.key] ?? null;
+        return [
+          f.column,
+          f.kind === 'connector' && typeof value === 'string'
+            ? known(connectors, value, 'the connector type')
+            : value,
+        ];
+      }),
+    ),
+  }));
+  return namedIds(db, EQUIPMENT_TABLES[family], columns, rows);
+}
+
+/** What a plan says of a module or unit beyond what its interface promises is taken as it is. */
+const SIZE: Entry = { lengthM: 1.72, widthM: 1.13 };
+
+/** The organisation's catalogue: the plan's types and the starter set; numbers by name. */
 export async function seedEquipment(
   db: Knex,
   organisation: OrganisationPlan,
   organisationId: number,
-): Promise<{ moduleTypes: Map<string, number>; unitTypes: Map<string, number> }> {
-  const moduleTypes = await namedIds(
+): Promise<SeededEquipment> {
+  const starter = starterEquipment();
+  const connectorTypes = await seedFamily(db, 'connectors', organisationId, starter.connectors, new Map());
+  const of = (family: EquipmentFamily, entries: readonly Entry[]) =>
+    seedFamily(db, family, organisationId, entries, connectorTypes);
+  return {
+    connectorTypes,
+    moduleTypes: await of(
+      'modules',
+      withStarter(
+        organisation.moduleTypes.map((t): Entry => ({ ...MODULE_DEFAULTS, ...SIZE, ...t })),
+        starter.modules,
+      ),
+    ),
+    unitTypes: await of('units', withStarter(organisation.unitTypes.map(entryOfUnit), starter.units)),
+    inverterTypes: await of('inverters', starter.inverters),
+  };
+}
+
+/** The starter set's documented pairs, recorded by a person of the organisation. */
+export async function seedPairs(
+  db: Knex,
+  organisationId: number,
+  connectorTypes: ReadonlyMap<string, number>,
+  recordedBy: number,
+): Promise<void> {
+  await insertRows(
     db,
-    'module_type',
-    {
-      organisation_id: 'int4',
-      name: 'text',
-      voc_ref: 'real',
-      isc_ref: 'real',
-      vmp_ref: 'real',
-      imp_ref: 'real',
-      beta_voc: 'real',
-      alpha_isc: 'real',
-      gamma_pmp: 'real',
-      cells_in_series: 'int2',
-      bypass_groups: 'int2',
-      noct: 'real',
-    },
-    organisation.moduleTypes.map((t) => ({
-      organisation_id: organisationId,
-      name: t.name,
-      voc_ref: t.vocRef,
-      isc_ref: t.iscRef,
-      vmp_ref: t.vmpRef,
-      imp_ref: t.impRef,
-      beta_voc: t.betaVoc,
-      alpha_isc: t.alphaIsc,
-      gamma_pmp: t.gammaPmp,
-      cells_in_series: t.cellsInSeries,
-      bypass_groups: t.bypassGroups,
-      noct: t.noct,
-    })),
+    'connector_pair',
+    { organisation_id: 'int4', first_id: 'int4', second_id: 'int4', evidence: 'text', recorded_by: 'int4' },
+    starterEquipment().pairs.map((pair) => {
+      const ids = [pair.first, pair.second].map((name) => known(connectorTypes, name, 'the connector type'));
+      return {
+        organisation_id: organisationId,
+        first_id: Math.min(...ids),
+        second_id: Math.max(...ids),
+        evidence: pair.evidence,
+        recorded_by: recordedBy,
+      };
+    }),
   );
-  const unitTypes = await namedIds(
-    db,
-    'unit_type',
-    {
-      organisation_id: 'int4',
-      name: 'text',
-      kind: 'text',
-      out_of_box: 'text',
-      released_by: 'text',
-      on_command_loss: 'text',
-      command_loss_after_s: 'real',
-      shutdown_voltage_nominal: 'real',
-      shutdown_voltage_min: 'real',
-      shutdown_voltage_max: 'real',
-      bypass_voltage: 'real',
-      measures: 'text',
-      voltage_accuracy: 'real',
-      current_accuracy: 'real',
-      voltage_in_max: 'real',
-      current_max: 'real',
-      insulation_test_max: 'real',
-      faces_allowed: 'text',
-    },
-    organisation.unitTypes.map((t) => ({
-      organisation_id: organisationId,
-      name: t.name,
-      kind: t.kind,
-      out_of_box: t.outOfBox,
-      released_by: t.releasedBy,
-      on_command_loss: t.onCommandLoss,
-      command_loss_after_s: t.commandLossAfterS,
-      shutdown_voltage_nominal: t.shutdownVoltage.nominal,
-      shutdown_voltage_min: t.shutdownVoltage.min,
-      shutdown_voltage_max: t.shutdownVoltage.max,
-      bypass_voltage: t.bypassVoltage,
-      measures: t.measures,
-      voltage_accuracy: t.voltageAccuracy,
-      current_accuracy: t.currentAccuracy,
-      voltage_in_max: t.voltageInMax,
-      current_max: t.currentMax,
-      insulation_test_max: t.insulationTestMax,
-      faces_allowed: t.facesAllowed,
-    })),
-  );
-  return { moduleTypes, unitTypes };
 }

@@ -1,7 +1,7 @@
 import { hash } from '@node-rs/argon2';
 import type { Knex } from 'knex';
 import type { FleetPlan, OrganisationPlan } from '../../simulator/plant/plan';
-import { seedEquipment } from './equipment';
+import { seedEquipment, seedPairs } from './equipment';
 import { insertRows, known } from './rows';
 import type { SeededPlant, SeedOptions } from './seeded';
 import { seedSite } from './site';
@@ -44,13 +44,16 @@ async function seedOrganisation(
   if (!made) throw new Error('The organisation was not written.');
   seeded.organisations.set(organisation.name, made);
 
-  const { moduleTypes, unitTypes } = await seedEquipment(db, organisation, made.id);
+  const { connectorTypes, ...types } = await seedEquipment(db, organisation, made.id);
   for (const site of organisation.sites)
     seeded.sites.set(
       site.name,
-      await seedSite(db, site, { organisationId: made.id, since, moduleTypes, unitTypes, options }),
+      await seedSite(db, site, { organisationId: made.id, since, ...types, options }),
     );
   await seedPeople(db, organisation, made.id, options, seeded);
+  const manager = organisation.people.find((p) => p.role === 'manager');
+  if (manager)
+    await seedPairs(db, made.id, connectorTypes, known(seeded.people, manager.email, 'the person').id);
 }
 
 async function seedPeople(

@@ -9,6 +9,7 @@ export interface SiteContext {
   since: Date;
   moduleTypes: Map<string, number>;
   unitTypes: Map<string, number>;
+  inverterTypes: Map<string, number>;
   options: SeedOptions;
 }
 
@@ -33,8 +34,15 @@ export async function seedSite(db: Knex, plan: SitePlan, context: SiteContext): 
   const inverters = await namedIds(
     db,
     'inverter',
-    { site_id: 'int4', name: 'text', ac_power_max: 'real' },
-    of(plan.inverters.map((i) => ({ name: i.name, ac_power_max: i.acPowerMax }))),
+    { site_id: 'int4', name: 'text', ac_power_max: 'real', inverter_type_id: 'int4' },
+    of(
+      plan.inverters.map((i) => ({
+        name: i.name,
+        ac_power_max: i.acPowerMax,
+        inverter_type_id:
+          i.type === undefined ? null : known(context.inverterTypes, i.type, 'the inverter type'),
+      })),
+    ),
   );
   const inputRows = await insertRows<{ id: number; inverter_id: number; number: number }>(
     db,
@@ -159,6 +167,9 @@ async function seedSiteRow(
       time_zone: 'text',
       stage: 'text',
       rule_set: 'text',
+      structure: 'text',
+      temperature_min: 'real',
+      temperature_max: 'real',
       switched_on_on: 'date',
       shutdown_switch_place: 'text',
       contact_name: 'text',
@@ -178,6 +189,9 @@ async function seedSiteRow(
         time_zone: plan.timeZone,
         stage: plan.stage,
         rule_set: plan.ruleSet,
+        structure: plan.structure ?? 'other_building',
+        temperature_min: plan.temperatureMin ?? null,
+        temperature_max: plan.temperatureMax ?? null,
         switched_on_on: plan.switchedOnOn,
         shutdown_switch_place: plan.shutdownSwitchPlace,
         contact_name: plan.contactName,

@@ -44,6 +44,11 @@ export interface SitePlan {
   timeZone: string;
   stage: 'commissioning' | 'operating';
   ruleSet: 'rapid_shutdown_30s' | 'rapid_shutdown_10s' | 'hazard_control' | 'none';
+  /** Absent: another building than a dwelling. */
+  structure?: 'one_or_two_family_dwelling' | 'other_building' | 'not_on_building';
+  /** °C, for design checks: coldest expected and hottest air; absent: not entered. */
+  temperatureMin?: number;
+  temperatureMax?: number;
   /** Local date; null while commissioning. */
   switchedOnOn: string | null;
   shutdownSwitchPlace: string;
@@ -82,6 +87,8 @@ export interface InverterPlan {
   /** W */
   acPowerMax: number;
   inputs: number[];
+  /** Name of its type in the catalogue; absent: not entered. */
+  type?: string;
 }
 
 export interface LoggerPlan {

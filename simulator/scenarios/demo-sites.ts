@@ -314,6 +314,7 @@ export const HARBOURLINE_SITES: DemoSite[] = [
     hour: 10.8,
     spec: {
       name: 'Netloft Terrace',
+      structure: 'one_or_two_family_dwelling',
       switchedOnOn: '2025-06-02',
       shutdownSwitchPlace: 'Alley side, beside the meters',
       contactName: 'Ebba Strand',

@@ -1,3 +1,5 @@
+import { inverterSheetOf } from '../../src/domain/equipment/inverter-type';
+import { starterEquipment } from '../../src/domain/equipment/starter';
 import type { UnitType } from '../../src/domain/equipment/unit-type';
 import type { ModuleType } from '../../src/domain/equipment/module-type';
 import { keyOf, mix } from '../chance';
@@ -32,6 +34,7 @@ export interface SiteSpec {
   name: string;
   stage?: SitePlan['stage'];
   ruleSet?: SitePlan['ruleSet'];
+  structure?: SitePlan['structure'];
   switchedOnOn: string | null;
   shutdownSwitchPlace: string;
   contactName: string;
@@ -100,6 +103,23 @@ const ordinal = (n: number): string => {
   return `${n}${tail}`;
 };
 
+/** K by which a place's coldest and hottest hours lie beyond its usual ones. */
+const COLD_SPELL = 6;
+const HEAT_WAVE = 5;
+
+/** The smallest inverter type of the starter set that takes a string's cold voltage, the inputs and the power. */
+function inverterTypeFor(need: { acPowerMax: number; inputs: number; voltage: number }): string {
+  const types = starterEquipment().inverters.map(inverterSheetOf);
+  const fits = types.filter(
+    (t) => t.inputs >= need.inputs && t.acPowerMax >= need.acPowerMax && t.voltageMax >= 1.1 * need.voltage,
+  );
+  const found = (fits.length > 0 ? fits : types).sort((a, b) =>
+    fits.length > 0 ? a.acPowerMax - b.acPowerMax : b.acPowerMax - a.acPowerMax,
+  )[0];
+  if (!found) throw new Error('The starter set has no inverter.');
+  return found.name;
+}
+
 /** Draws a whole site from its specification: rows of modules on the roof, inputs, inverters, serials, roster order. */
 export function layOut(
   spec: SiteSpec,
@@ -163,14 +183,17 @@ export function layOut(
 
   const width = round(1.2 + IN_A_ROW * MODULE_WIDTH);
   const depth = round(1.2 + (row + 1) * (MODULE_DEPTH + ROW_GAP));
+  const longest = Math.max(...strings.map((s) => s.slots.length));
   const inverters = Array.from({ length: Math.floor(input / inputsPerInverter) + 1 }, (_, i) => {
     const first = i * inputsPerInverter;
     const power = inputPower.slice(first, first + inputsPerInverter);
     const total = power.reduce((a, b) => a + b, 0);
+    const acPowerMax = Math.max(1000, Math.round(total / (spec.oversizing ?? 1.1) / 500) * 500);
     return {
       name: `Inverter ${i + 1}`,
-      acPowerMax: Math.max(1000, Math.round(total / (spec.oversizing ?? 1.1) / 500) * 500),
+      acPowerMax,
       inputs: power.map((_power, n) => n + 1),
+      type: inverterTypeFor({ acPowerMax, inputs: power.length, voltage: longest * moduleType.vocRef }),
     };
   });
 
@@ -185,6 +208,9 @@ export function layOut(
     timeZone: place.timeZone,
     stage: spec.stage ?? 'operating',
     ruleSet: spec.ruleSet ?? 'rapid_shutdown_30s',
+    structure: spec.structure ?? 'other_building',
+    temperatureMin: temperatureMean - temperatureSeason - temperatureDay - COLD_SPELL,
+    temperatureMax: temperatureMean + temperatureSeason + temperatureDay + HEAT_WAVE,
     switchedOnOn: spec.switchedOnOn,
     shutdownSwitchPlace: spec.shutdownSwitchPlace,
     contactName: spec.contactName,

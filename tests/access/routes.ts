@@ -1,36 +1,12 @@
 import { randomUUID } from 'node:crypto';
-import type { Permission } from '../../src/domain/access/permissions';
+import { get, type Route, type Target } from './route';
+import { DESIGN_AND_EQUIPMENT } from './routes-equipment';
 
-/** A site of the matrix and one of its strings, by public identifier. */
-export interface Target {
-  site: string;
-  string: string;
-}
-export interface Route {
-  /** The file under src/pages. */
-  file: string;
-  method: 'GET' | 'POST' | 'PUT' | 'PATCH' | 'DELETE';
-  /** What the table of permissions must say for it; `public`: works before anybody is signed in. */
-  permission: Permission | 'public';
-  /** What its address names. */
-  of: 'nothing' | 'site' | 'string';
-  path: (target: Target) => string;
-  /** As it is, or made for the target. */
-  body?: unknown;
-  /** Statuses that mean that somebody who may was served. */
-  served: readonly number[];
-}
-
-const get = (
-  file: string,
-  permission: Route['permission'],
-  of: Route['of'],
-  path: Route['path'],
-  served: readonly number[] = [200],
-): Route => ({ file, method: 'GET', permission, of, path, served });
+export type { Route, Target } from './route';
 
 /** Every route of the product. A file under src/pages that is not here fails the matrix. */
 export const ROUTES: readonly Route[] = [
+  ...DESIGN_AND_EQUIPMENT,
   // pages
   get('index.astro', 'fleet.read', 'nothing', () => '/'),
   get('shutdown.astro', 'shutdown.read', 'nothing', () => '/shutdown'),

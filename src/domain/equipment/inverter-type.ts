@@ -22,7 +22,10 @@ const INPUT = 'One input';
 export const INVERTER_FIELDS: readonly Field[] = [
   NAME_FIELD,
   figure('acPowerMax', 'ac_power_max', 'Maximum AC power', AC, 'kW', 0.1, 10_000, { scale: 1000 }),
-  figure('inputs', 'inputs', 'Inputs (MPPT)', AC, '', 1, 64, { whole: true }),
+  figure('inputs', 'inputs', 'Inputs', AC, '', 1, 64, {
+    whole: true,
+    hint: 'Each with a maximum-power tracker of its own.',
+  }),
   figure('stringsPerInput', 'strings_per_input', 'Strings an input takes', AC, '', 1, 64, { whole: true }),
   figure('voltageMax', 'voltage_max', 'Maximum DC voltage', INPUT, 'V', 30, 2000),
   figure('mpptMin', 'mppt_min', 'MPPT window, from', INPUT, 'V', 1, 2000),

@@ -87,6 +87,7 @@ export function held(of: Limit): DesignFinding {
   if (limit === null)
     return {
       ...shared,
+      value: null, // without a limit the figure only keeps apart strings of which the same is to be said
       outcome: 'cannot_tell',
       words: of.missing ?? 'The limit isn’t entered.',
       remedy: of.remedy,
