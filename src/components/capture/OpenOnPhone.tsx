@@ -1,0 +1,72 @@
+import { encode } from 'uqr';
+import { paths } from '../../schemas/paths';
+import { ButtonLink } from '../ui/Button';
+
+interface Props {
+  /** Public identifier of the site. */
+  site: string;
+  siteName: string;
+  /** https://… as a phone reaches the site. */
+  origin: string;
+}
+
+/** Width of the quiet zone that ISO/IEC 18004 asks for, in modules of the code. */
+const QUIET = 4;
+
+/** A QR code as one path: black on white in both colour schemes, as cameras want it. */
+export function QrCode({ text, label, size = 176 }: { text: string; label: string; size?: number }) {
+  const { data, size: modules } = encode(text, { ecc: 'M', border: 0 });
+  const path = data
+    .flatMap((row, y) => row.map((dark, x) => (dark ? `M${x + QUIET} ${y + QUIET}h1v1h-1z` : '')))
+    .join('');
+  const side = modules + 2 * QUIET;
+  return (
+    <svg
+      role="img"
+      aria-label={label}
+      width={size}
+      height={size}
+      viewBox={`0 0 ${side} ${side}`}
+      shapeRendering="crispEdges"
+      className="max-w-full border border-rule"
+    >
+      <rect width={side} height={side} fill="#ffffff" />
+      <path d={path} fill="#000000" />
+    </svg>
+  );
+}
+
+/** The way from a desk to the roof: a code for the phone's camera, and the address for its keyboard. */
+export function OpenOnPhone({ site, siteName, origin }: Props) {
+  const address = new URL(paths.capture(site), origin).href;
+  const secure = address.startsWith('https:') || /^(localhost|127\.|\[::1\])/.test(new URL(address).hostname);
+  return (
+    <details className="group border-b border-t border-rule">
+      <summary className="flex min-h-[44px] cursor-pointer list-none items-center justify-between gap-3">
+        <span className="font-medium">Readings and checks on a phone</span>
+        <span className="text-sm text-petrol underline underline-offset-[3px]">
+          <span className="group-open:hidden">Show the code</span>
+          <span className="hidden group-open:inline">Fold</span>
+        </span>
+      </summary>
+      <div className="flex flex-wrap items-start gap-4 pb-4">
+        <QrCode text={address} label={`Code of the address ${address}`} />
+        <div className="min-w-0 max-w-[420px] flex-1">
+          <p className="text-[15px] leading-[21px]">
+            {`Scan it once where there is a network: from then on the page of ${siteName} opens on that phone without one, and what is recorded is sent when the network returns.`}
+          </p>
+          {!secure && (
+            <p className="mt-2 text-[15px] leading-[21px] text-rust-ink">
+              This site is reached by plain HTTP: phones then open no camera for it and keep no page. Give it
+              a certificate (TLS_CERT) or a proxy that speaks HTTPS.
+            </p>
+          )}
+          <p className="mt-2 break-all text-sm text-ink-2">{address}</p>
+          <ButtonLink className="mt-3 min-h-[44px]" href={paths.capture(site)}>
+            Open on this device
+          </ButtonLink>
+        </div>
+      </div>
+    </details>
+  );
+}
