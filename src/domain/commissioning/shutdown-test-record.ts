@@ -195,7 +195,10 @@ function take(record: TestRecord, { id, at, recordedAt, person, act }: KeptAct):
       return;
     case 'reading': {
       const { kind: _, round, ...reading } = act;
-      record.rounds[round]?.readings.push({ ...reading, id, at, by: person, struck: null });
+      const readings = record.rounds[round]?.readings;
+      // stored already, and still waiting on a phone that has not heard so
+      if (readings?.some((r) => r.id === id)) return;
+      readings?.push({ ...reading, id, at, by: person, struck: null });
       return;
     }
     default: {

@@ -15,6 +15,7 @@ import { id } from './now';
 /** Shutdown tests: guided, signed, listed. Times ISO 8601 in UTC; V and s. */
 
 export const testParams = z.strictObject({ test: z.uuid() });
+export const sitesTestParams = z.strictObject({ site: z.uuid(), test: z.uuid() });
 
 const name = (what: string) =>
   z

@@ -134,13 +134,13 @@ export async function insertSigned(tx: Tx, signed: NewSignedTest): Promise<numbe
   const id = rows[0]!.id;
   await tx.raw(
     `insert into shutdown_test_string (test_id, string_id, site_id, result, carried_from)
-     select ?, s, ?, r, c from unnest(?::int4[], ?::text[], ?::int4[]) x(s, r, c)`,
+     select ?, s, ?, r, nullif(c, 0) from unnest(?::int4[], ?::text[], ?::int4[]) x(s, r, c)`,
     [
       id,
       head.siteId,
       signed.strings.map((s) => s.stringId),
       signed.strings.map((s) => s.result),
-      signed.strings.map((s) => s.carriedFrom),
+      signed.strings.map((s) => s.carriedFrom ?? 0),
     ],
   );
   return id;

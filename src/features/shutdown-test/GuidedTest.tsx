@@ -1,0 +1,294 @@
+import { useState, type SubmitEvent } from 'react';
+import { useMutation } from '@tanstack/react-query';
+import { Button } from '../../components/ui/Button';
+import { Caution } from '../../components/ui/Caution';
+import { Dialog } from '../../components/ui/Dialog';
+import { Field } from '../../components/ui/Field';
+import { Heading } from '../../components/ui/Heading';
+import { Notice } from '../../components/ui/Notice';
+import { nextRound, openRound, type TestRecord } from '../../domain/commissioning/shutdown-test-record';
+import { ApiError, api } from '../../lib/api';
+import { queryClient } from '../../lib/query-client';
+import { paths } from '../../schemas/paths';
+import type { ShutdownTestPage } from '../../schemas/api/shutdown-test';
+import { clock } from '../../drawings/times';
+import { CautionStep } from './CautionStep';
+import { PlanStep } from './PlanStep';
+import { RoundStep } from './RoundStep';
+import { SignStep } from './SignStep';
+import { roundName } from './round';
+import { useTest, type TestInHand } from './use-test';
+import { stepWords } from './words';
+
+type Step = 'plan' | 'caution' | 'sign' | number;
+
+/** Where the test stands: the step that comes next. */
+function dueStep(record: TestRecord): Step {
+  if (record.plan === null) return 'plan';
+  if (record.caution === null) return 'caution';
+  return openRound(record) ?? nextRound(record) ?? 'sign';
+}
+
+interface Props {
+  initial: ShutdownTestPage;
+  person: { id: string; name: string };
+  mayRun: boolean;
+}
+
+/** A shutdown test, step by step, on the phone and at the desk. */
+export function GuidedTest({ initial, person, mayRun }: Props) {
+  const test = useTest(initial, person.id);
+  const { page, record } = test;
+  const [chosen, setChosen] = useState<Step | null>(null);
+  const due = dueStep(record);
+  const step = chosen ?? due;
+  const mayWrite = mayRun && page.state === 'draft';
+  const go = (next: Step | null) => {
+    setChosen(next);
+    window.scrollTo({ top: 0 });
+  };
+  const words = stepWords(page, record, step);
+  const steps: { step: Step; label: string; done: boolean; open: boolean }[] = [
+    { step: 'plan', label: 'Who and what', done: record.plan !== null, open: true },
+    { step: 'caution', label: 'Caution', done: record.caution !== null, open: record.plan !== null },
+    ...record.rounds.map((r, i) => ({
+      step: i,
+      label: roundName(page.facts, r.transmitter),
+      done: r.ended !== null,
+      open: record.caution !== null,
+    })),
+    { step: 'sign', label: 'Verdict and signature', done: false, open: record.caution !== null },
+  ];
+  return (
+    <>
+      <Heading
+        crumbs={[
+          { label: 'Commissioning', href: paths.commissioning() },
+          { label: page.site.name, href: paths.commissioningSite(page.site.id) },
+          { label: 'Shutdown tests', href: paths.shutdownTests(page.site.id) },
+        ]}
+        finding={words.heading}
+        sentence={words.sentence}
+      />
+      <Told test={test} />
+      <div className="grid gap-5 lg:grid-cols-[220px_minmax(0,1fr)]">
+        <nav aria-label="Steps of the test" className="no-print">
+          <ol className="flex flex-wrap gap-x-3 lg:block">
+            {steps.map((s, i) => (
+              <li key={String(s.step)}>
+                <button
+                  type="button"
+                  disabled={!s.open}
+                  aria-current={s.step === step ? 'step' : undefined}
+                  onClick={() => go(s.step)}
+                  className={`target inline-flex min-h-[44px] items-center gap-2 text-left disabled:text-ink-3 ${s.step === step ? 'font-semibold underline underline-offset-4' : ''}`}
+                >
+                  <span aria-hidden="true">{s.done ? '✓' : `${i + 1}.`}</span>
+                  <span className={s.step === step ? '' : 'sr-only lg:not-sr-only'}>
+                    {s.label}
+                    {s.done && <span className="sr-only">, done</span>}
+                  </span>
+                </button>
+              </li>
+            ))}
+          </ol>
+          {mayWrite && (
+            <div className="hidden lg:block">
+              <EndTest test={test} />
+            </div>
+          )}
+        </nav>
+        <div className="min-w-0">
+          {step === 'plan' &&
+            (mayWrite ? (
+              <PlanStep
+                key={record.planned?.at ?? 'new'}
+                page={page}
+                plan={record.plan}
+                person={person.name}
+                now={test.now}
+                onPlanned={(plan) => {
+                  test.act({ kind: 'planned', plan });
+                  go(null);
+                }}
+              />
+            ) : (
+              <Notice
+                kind="empty"
+                title={
+                  record.plan
+                    ? `${record.plan.onSite} is on site, ${record.plan.operator} operates the initiator`
+                    : 'Nothing is planned yet'
+                }
+              />
+            ))}
+          {step === 'caution' &&
+            (mayWrite ? (
+              <CautionStep
+                facts={page.facts}
+                record={record}
+                person={person.name}
+                onAccepted={(name) => {
+                  test.act({ kind: 'caution_accepted', name });
+                  go(null);
+                }}
+              />
+            ) : (
+              <Notice
+                kind="empty"
+                title={record.caution ? `Accepted by ${record.caution.name}` : 'Not accepted yet'}
+              />
+            ))}
+          {typeof step === 'number' && record.rounds[step] && (
+            <>
+              <div className="mb-5">
+                <Caution strong="Treat every conductor as live.">
+                  Shutdown is not isolation. Wakeline switches nothing; a person does.
+                </Caution>
+              </div>
+              <RoundStep key={step} test={test} index={step} mayWrite={mayWrite} />
+              {record.rounds[step].ended && (
+                <AfterRound test={test} index={step} mayWrite={mayWrite} go={go} />
+              )}
+            </>
+          )}
+          {step === 'sign' && <SignStep test={test} person={person.name} mayWrite={mayWrite} />}
+          {mayWrite && (
+            <div className="mt-4 lg:hidden">
+              <EndTest test={test} />
+            </div>
+          )}
+        </div>
+      </div>
+    </>
+  );
+}
+
+function AfterRound({
+  test,
+  index,
+  mayWrite,
+  go,
+}: {
+  test: TestInHand;
+  index: number;
+  mayWrite: boolean;
+  go: (s: Step | null) => void;
+}) {
+  const { record, page, act } = test;
+  const next = nextRound(record);
+  const { transmitter } = record.rounds[index]!;
+  return (
+    <div className="mt-5 flex flex-wrap gap-2">
+      <Button weight="primary" onClick={() => go(next ?? 'sign')}>
+        {next === undefined ? 'Go to the verdict' : `Go to round ${next + 1}`}
+      </Button>
+      {mayWrite && (
+        <Button
+          onClick={() => {
+            act({ kind: 'round_added', transmitter });
+            go(record.rounds.length);
+          }}
+        >
+          Another round: {roundName(page.facts, transmitter)}
+        </Button>
+      )}
+    </div>
+  );
+}
+
+/** What a person should know before anything else: others at it, what waits, what was refused. */
+function Told({ test }: { test: TestInHand }) {
+  const { page, waiting, refused, problem } = test;
+  const zone = page.site.timeZone;
+  return (
+    <div className="mb-4 grid gap-3 empty:hidden" aria-live="polite">
+      {page.ended && (
+        <Notice
+          kind="stale"
+          title={`Ended without a signature by ${page.ended.by}, ${clock(page.ended.at, zone)}`}
+        >
+          {page.ended.reason}
+        </Notice>
+      )}
+      {page.state === 'draft' && page.others.length > 0 && (
+        <Notice
+          kind="stale"
+          title={`${page.others.map((o) => o.name).join(', ')} ${page.others.length === 1 ? 'is' : 'are'} at this test too`}
+        >
+          Last entry {clock(page.others.at(-1)!.at, zone)}. You see what they save, and they see yours; agree
+          who reads and who watches.
+        </Notice>
+      )}
+      {waiting > 0 && (
+        <Notice
+          kind="stale"
+          title={`${waiting} ${waiting === 1 ? 'entry waits' : 'entries wait'} on this phone`}
+        >
+          {problem?.status === 401
+            ? 'You are signed out: sign in again in another tab; nothing is lost.'
+            : 'They are kept here, with their times, and sent when the network is back.'}
+        </Notice>
+      )}
+      {waiting === 0 && problem && (
+        <Notice kind="stale" title="The newest could not be read">
+          {problem.message}
+        </Notice>
+      )}
+      {refused.map((r) => (
+        <Notice
+          key={r.id}
+          kind="failed"
+          title={`Not taken: ${r.act.kind.replaceAll('_', ' ')}, ${clock(r.at, zone)}`}
+          action={<Button onClick={() => test.forget(r.id)}>Remove it</Button>}
+        >
+          {r.why}
+        </Notice>
+      ))}
+    </div>
+  );
+}
+
+function EndTest({ test }: { test: TestInHand }) {
+  const [open, setOpen] = useState(false);
+  const [reason, setReason] = useState('');
+  const end = useMutation(
+    {
+      mutationFn: () =>
+        api<void>(paths.api.shutdownTestEnd(test.page.id), { method: 'POST', body: { reason } }),
+      onSuccess: () => window.location.assign(paths.shutdownTests(test.page.site.id)),
+    },
+    queryClient(),
+  );
+  const submit = (event: SubmitEvent) => {
+    event.preventDefault();
+    end.mutate();
+  };
+  const fault = end.error instanceof ApiError ? (end.error.fault('reason') ?? end.error.message) : undefined;
+  return (
+    <>
+      <button
+        type="button"
+        className="target mt-2 text-sm text-petrol underline underline-offset-2"
+        onClick={() => setOpen(true)}
+      >
+        End without signing …
+      </button>
+      <Dialog open={open} title="End this test without a signature" onClose={() => setOpen(false)}>
+        <form onSubmit={submit} noValidate>
+          <p className="mb-3">What was written stays readable in the list. It counts as no test.</p>
+          <Field
+            label="Why"
+            maxLength={2000}
+            value={reason}
+            error={fault}
+            onChange={(e) => setReason(e.target.value)}
+          />
+          <Button type="submit" weight="primary" className="mt-3" disabled={end.isPending}>
+            End the test
+          </Button>
+        </form>
+      </Dialog>
+    </>
+  );
+}

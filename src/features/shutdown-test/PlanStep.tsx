@@ -1,0 +1,229 @@
+import { useState, useSyncExternalStore, type SubmitEvent } from 'react';
+import { Button } from '../../components/ui/Button';
+import { Field } from '../../components/ui/Field';
+import { Segmented } from '../../components/ui/Segmented';
+import { Sheet } from '../../components/ui/Sheet';
+import { CATEGORIES, LIGHTS, type TestPlan } from '../../domain/commissioning/shutdown-test-record';
+import { localDay } from '../../drawings/times';
+import type { ShutdownTestPage } from '../../schemas/api/shutdown-test';
+import { readTyped, typedText, writeTyped } from './kept';
+import { formOf, planForm, readPlan, type PlanForm } from './plan-form';
+import { roundName, roundsNeeded } from './round';
+
+const LIGHT_WORDS = { bright: 'Bright', dull: 'Dull', snow: 'Snow on modules', night: 'Night' } as const;
+const CATEGORY_WORDS = {
+  'CAT IV': 'CAT IV',
+  'CAT III': 'CAT III',
+  'CAT II': 'CAT II',
+  none: 'No mark',
+} as const;
+
+const never = () => () => undefined;
+
+interface Props {
+  page: ShutdownTestPage;
+  plan: TestPlan | null;
+  person: string;
+  now: () => number;
+  onPlanned: (plan: TestPlan) => void;
+}
+
+/** Step 1: who is there, what is tested, in which light, with which instrument. */
+export function PlanStep({ page, plan, person, now, onPlanned }: Props) {
+  const { facts } = page;
+  const name = `plan.${page.id}`;
+  // what was typed before a reload; on the server and at first paint nothing
+  const before = useSyncExternalStore(
+    never,
+    () => typedText(name),
+    () => null,
+  );
+  const [edited, setEdited] = useState<PlanForm | null>(null);
+  const [tried, setTried] = useState(false);
+  const form = edited ?? readTyped(before, planForm) ?? formOf(facts, plan ?? page.suggested, person);
+  const change = (some: Partial<PlanForm>) => {
+    const next = { ...form, ...some };
+    setEdited(next);
+    writeTyped(name, next);
+  };
+  const { plan: read, faults } = readPlan(facts, form, localDay(now(), facts.site.timeZone));
+  const fault = (field: string) => (tried ? faults[field] : undefined);
+  const submit = (event: SubmitEvent) => {
+    event.preventDefault();
+    setTried(true);
+    if (!read) {
+      const form = event.currentTarget as HTMLElement;
+      setTimeout(() => form.querySelector<HTMLElement>('[aria-invalid]')?.focus());
+      return;
+    }
+    writeTyped(name, null);
+    onPlanned(read);
+  };
+  const needed = roundsNeeded(facts, form.strings);
+  const text = (
+    field: 'onSite' | 'operator' | 'others' | 'weather' | 'name' | 'serial' | 'ratedV' | 'calibratedOn',
+  ) => ({
+    name: field,
+    value: form[field],
+    onChange: (e: { target: { value: string } }) => change({ [field]: e.target.value }),
+    error: fault(field),
+    autoComplete: 'off',
+  });
+  return (
+    <form onSubmit={submit} noValidate className="grid gap-5">
+      <Sheet id="people" title="Who is there">
+        <div className="grid gap-4 sm:grid-cols-2">
+          <Field label="Person on site" hint="In charge of the test." {...text('onSite')} />
+          <Field
+            label="Who operates the initiator"
+            hint={`${facts.initiator.name}${facts.initiator.place ? `, ${facts.initiator.place}` : ''}`}
+            {...text('operator')}
+          />
+          <Field
+            label="Others present"
+            hint="Witnesses, the customer; may stay empty."
+            className="sm:col-span-2"
+            {...text('others')}
+          />
+        </div>
+      </Sheet>
+      <Sheet
+        id="what"
+        title={`What is tested: ${facts.zone.name}`}
+        aside={`${form.strings.length} of ${facts.strings.length} strings`}
+      >
+        <fieldset>
+          <legend className="sr-only">Strings</legend>
+          <div className="grid grid-cols-3 gap-1 sm:grid-cols-5 lg:grid-cols-8">
+            {facts.strings.map((s) => (
+              <label key={s.id} className="flex min-h-[44px] items-center gap-2">
+                <input
+                  type="checkbox"
+                  className="h-5 w-5 flex-none accent-petrol"
+                  checked={form.strings.includes(s.id)}
+                  onChange={(e) =>
+                    change({
+                      strings: e.target.checked
+                        ? facts.strings.map((x) => x.id).filter((x) => x === s.id || form.strings.includes(x))
+                        : form.strings.filter((x) => x !== s.id),
+                    })
+                  }
+                />
+                {s.name}
+              </label>
+            ))}
+          </div>
+          {fault('strings') && (
+            <p role="alert" className="mt-1 text-sm font-medium text-rust-ink">
+              {fault('strings')}
+            </p>
+          )}
+        </fieldset>
+        <h3 className="mt-4 font-medium">Rounds</h3>
+        <ol className="mt-1">
+          {needed.map((r, i) => (
+            <li key={r ?? 'initiator'} className="flex min-h-[44px] items-center gap-2">
+              {r === null ? (
+                <span>
+                  {i + 1}. {roundName(facts, r)}
+                </span>
+              ) : (
+                <label className="flex min-h-[44px] items-center gap-2">
+                  <input
+                    type="checkbox"
+                    className="h-5 w-5 flex-none accent-petrol"
+                    checked={!form.without.includes(r)}
+                    onChange={(e) =>
+                      change({
+                        without: e.target.checked
+                          ? form.without.filter((x) => x !== r)
+                          : [...form.without, r],
+                      })
+                    }
+                  />
+                  {i + 1}. {roundName(facts, r)}, the others running
+                </label>
+              )}
+            </li>
+          ))}
+        </ol>
+        {needed.length > 1 && (
+          <p className="text-sm text-ink-2">
+            A string that hears a neighbour’s transmitter shows itself only while its own is off and the
+            others run.
+          </p>
+        )}
+      </Sheet>
+      <Sheet id="light" title="Light and weather">
+        <Segmented
+          look="bold"
+          label="Light on the modules"
+          value={form.light}
+          options={LIGHTS.map((value) => ({ value, label: LIGHT_WORDS[value] }))}
+          onChange={(light) => change({ light })}
+        />
+        {(form.light === 'night' || form.light === 'snow') && (
+          <p className="mt-2 text-rust-ink">A dead string in this light proves nothing: nothing can pass.</p>
+        )}
+        <Field
+          label="Weather"
+          hint="Clear, cloud passing, 12 °C, wind …"
+          className="mt-4"
+          {...text('weather')}
+        />
+      </Sheet>
+      <Sheet id="instrument" title="Instrument">
+        <label className="mb-3 flex min-h-[44px] items-center gap-3">
+          <input
+            type="checkbox"
+            className="h-5 w-5 flex-none accent-petrol"
+            checked={form.withInstrument}
+            onChange={(e) => change({ withInstrument: e.target.checked })}
+          />
+          A rated instrument is used at the home runs
+        </label>
+        {form.withInstrument ? (
+          <div className="grid gap-4 sm:grid-cols-2">
+            <Field label="Make and model" {...text('name')} />
+            <Field label="Serial number" {...text('serial')} />
+            <div>
+              <p className="mb-1 font-medium">Measurement category at its input</p>
+              <Segmented
+                look="bold"
+                label="Measurement category"
+                value={form.category}
+                options={CATEGORIES.map((value) => ({ value, label: CATEGORY_WORDS[value] }))}
+                onChange={(category) => change({ category })}
+              />
+            </div>
+            <Field label="Rated voltage of that category" unit="V" inputMode="decimal" {...text('ratedV')} />
+            <Field label="Calibrated on" type="date" {...text('calibratedOn')} />
+            <label className="flex min-h-[44px] items-center gap-3 self-end">
+              <input
+                type="checkbox"
+                className="h-5 w-5 flex-none accent-petrol"
+                checked={form.provedBefore}
+                onChange={(e) => change({ provedBefore: e.target.checked })}
+              />
+              Proved on a known source just now
+            </label>
+          </div>
+        ) : (
+          <p className="text-ink-2">
+            Without one the test can be consistent at best: inverters can not read a few volts.
+          </p>
+        )}
+      </Sheet>
+      <div>
+        {tried && !read && (
+          <p role="alert" className="mb-2 font-medium text-rust-ink">
+            {Object.values(faults)[0]}
+          </p>
+        )}
+        <Button type="submit" weight="primary" className="w-full sm:w-auto">
+          {plan ? 'Save these changes' : 'Save and read the caution'}
+        </Button>
+      </div>
+    </form>
+  );
+}

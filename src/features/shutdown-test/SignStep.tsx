@@ -1,0 +1,182 @@
+import { useState, type SubmitEvent } from 'react';
+import { useMutation } from '@tanstack/react-query';
+import { Button } from '../../components/ui/Button';
+import { Field } from '../../components/ui/Field';
+import { Notice } from '../../components/ui/Notice';
+import { Segmented } from '../../components/ui/Segmented';
+import { Sheet } from '../../components/ui/Sheet';
+import { nextRound, openRound } from '../../domain/commissioning/shutdown-test-record';
+import { ApiError, api } from '../../lib/api';
+import { queryClient } from '../../lib/query-client';
+import { paths } from '../../schemas/paths';
+import type { SignTest } from '../../schemas/api/shutdown-test';
+import { HazardCard, Results } from './Results';
+import type { TestInHand } from './use-test';
+
+/** Step 6: what was shown, what is missing, and the signature. */
+export function SignStep({
+  test,
+  person,
+  mayWrite,
+}: {
+  test: TestInHand;
+  person: string;
+  mayWrite: boolean;
+}) {
+  const { page, record, act } = test;
+  const { verdict, site } = page;
+  const [remark, setRemark] = useState('');
+  const read = record.rounds.some((r) => r.readings.some((x) => x.struck === null));
+  const open = openRound(record);
+  const next = nextRound(record);
+  return (
+    <div className="grid gap-5">
+      <HazardCard verdict={verdict} />
+      {read && (
+        <Sheet id="proof" title="The instrument after the test">
+          <p className="mb-2">
+            Prove it again on a known source: a meter that died meanwhile reads zero on a live string. Without
+            this no reading decides.
+          </p>
+          {mayWrite ? (
+            <Segmented
+              look="bold"
+              label="Proved after the test"
+              value={record.provedAfter === null ? '' : record.provedAfter ? 'right' : 'wrong'}
+              options={[
+                { value: 'right', label: 'It read the known source right' },
+                { value: 'wrong', label: 'It did not' },
+              ]}
+              onChange={(v) => act({ kind: 'proved_after', proved: v === 'right' })}
+            />
+          ) : (
+            <p>
+              {record.provedAfter === null
+                ? 'Not done yet.'
+                : record.provedAfter
+                  ? 'It read right.'
+                  : 'It did not read right.'}
+            </p>
+          )}
+        </Sheet>
+      )}
+      <Results verdict={verdict} siteId={site.id} timeZone={site.timeZone} />
+      <Sheet id="remarks" title="Remarks">
+        {record.remarks.map((r) => (
+          <p key={r.at} className="mb-1">
+            {r.text} <span className="text-sm text-ink-2">{r.by}</span>
+          </p>
+        ))}
+        {mayWrite && (
+          <form
+            className="mt-2 flex flex-wrap items-end gap-2"
+            onSubmit={(event) => {
+              event.preventDefault();
+              if (remark.trim() === '') return;
+              act({ kind: 'remark', text: remark.trim() });
+              setRemark('');
+            }}
+          >
+            <Field
+              label="Add a remark"
+              className="min-w-[220px] flex-1"
+              maxLength={1000}
+              value={remark}
+              onChange={(e) => setRemark(e.target.value)}
+            />
+            <Button type="submit">Add it</Button>
+          </form>
+        )}
+      </Sheet>
+      {mayWrite && (
+        <Sheet id="sign" title="Sign">
+          {open !== undefined ? (
+            <p>Round {open + 1} is still under way: end it first.</p>
+          ) : test.waiting > 0 ? (
+            <p>{test.waiting} entries wait on this phone: they must arrive before anything is signed.</p>
+          ) : (
+            <SignForm
+              test={test}
+              person={person}
+              openRounds={next !== undefined}
+              unproved={read && record.provedAfter === null}
+            />
+          )}
+        </Sheet>
+      )}
+    </div>
+  );
+}
+
+function SignForm({
+  test,
+  person,
+  openRounds,
+  unproved,
+}: {
+  test: TestInHand;
+  person: string;
+  openRounds: boolean;
+  unproved: boolean;
+}) {
+  const { page } = test;
+  const [password, setPassword] = useState('');
+  const sign = useMutation(
+    {
+      mutationFn: (body: SignTest) =>
+        api<{ fingerprint: string }>(paths.api.shutdownTestSign(page.id), { method: 'POST', body }),
+      onSuccess: () => window.location.reload(),
+      onError: (e) => {
+        if (e instanceof ApiError && e.status === 409) void test.reload();
+      },
+    },
+    queryClient(),
+  );
+  const submit = (event: SubmitEvent) => {
+    event.preventDefault();
+    sign.mutate({ password, fingerprint: page.fingerprint });
+  };
+  const fault = sign.error instanceof ApiError ? sign.error.fault('password') : undefined;
+  return (
+    <form onSubmit={submit} noValidate>
+      <p className="mb-3">
+        You sign as <strong className="font-semibold">{person}</strong>:{' '}
+        <strong className="font-semibold">{page.verdict.headline}</strong>. A signed test is never changed; a
+        newer one can supersede it.
+        {openRounds && ' Not every planned round was run.'}
+      </p>
+      {sign.error && !fault && (
+        <div className="mb-3">
+          <Notice
+            kind="failed"
+            title={sign.error instanceof ApiError ? sign.error.title : 'It was not signed'}
+          >
+            {sign.error.message}
+          </Notice>
+        </div>
+      )}
+      <Field
+        label="Your password again"
+        type="password"
+        name="password"
+        autoComplete="current-password"
+        className="max-w-[360px]"
+        value={password}
+        error={fault}
+        onChange={(e) => setPassword(e.target.value)}
+      />
+      {unproved && (
+        <p className="mt-2 text-rust-ink">Say first whether the instrument was proved after the test.</p>
+      )}
+      <Button
+        type="submit"
+        weight="primary"
+        className="mt-3 w-full sm:w-auto"
+        disabled={sign.isPending || password === '' || unproved}
+      >
+        {sign.isPending ? 'Signing …' : 'Sign this test'}
+      </Button>
+      <p className="mt-3 break-all text-sm text-ink-2">Fingerprint of what is shown: {page.fingerprint}</p>
+    </form>
+  );
+}

@@ -1,0 +1,121 @@
+import { Button } from '../../components/ui/Button';
+import { Tag } from '../../components/ui/Tag';
+import { volts } from '../../drawings/numbers';
+import type { TestReading } from '../../domain/commissioning/shutdown-test-record';
+import type { StringNow } from './round';
+
+/** One reading in a line: "8.4 · 0.1 · −0.1 V at 22 s". */
+export function readingWords(r: TestReading): string {
+  const { positiveToNegativeV: pn, positiveToEarthV: pe, negativeToEarthV: ne } = r.voltages;
+  const figures = [
+    ['+ to −', pn],
+    ['+ to earth', pe],
+    ['− to earth', ne],
+  ] as const;
+  const read = figures.flatMap(([name, v]) => (v === null ? [] : [`${name} ${volts(v)}`])).join(', ');
+  const when = r.moment === 'before' ? 'before the command' : `${Math.round(r.afterS ?? 0)} s after it`;
+  return `${read}, ${when}${r.atInverterEnd ? '' : ', not at the inverter’s end'}`;
+}
+
+function Now({ s, timeLimitS, sinceS }: { s: StringNow; timeLimitS: number; sinceS: number | null }) {
+  if (sinceS === null)
+    return <span className="text-ink-2">{s.points.length > 0 ? '' : 'waiting for the command'}</span>;
+  if (!s.newest) return <span className="text-ink-2">nothing reported</span>;
+  const over = s.newest.volts > s.limitV;
+  const late = s.newest.afterS >= timeLimitS;
+  const input = s.source.startsWith('inverter');
+  return (
+    <span className="inline-flex flex-wrap items-center justify-end gap-x-2">
+      <span className="tabular-nums">
+        <span className="text-[17px] font-semibold">{volts(s.newest.volts)}</span>{' '}
+        <span className="text-sm text-ink-2">at {Math.round(s.newest.afterS)} s</span>
+      </span>
+      {s.underFromS !== null ? (
+        <Tag tone="plum" shape="▁">
+          {s.limitV} V or less {s.underFromS < 1 ? 'from the start' : `after ${Math.ceil(s.underFromS)} s`}
+        </Tag>
+      ) : over && late && !input ? (
+        <Tag tone="crimson" shape="▲">
+          over {s.limitV} V past {timeLimitS} s
+        </Tag>
+      ) : (
+        <Tag tone="outline">over {s.limitV} V</Tag>
+      )}
+    </span>
+  );
+}
+
+interface Props {
+  strings: readonly StringNow[];
+  timeLimitS: number;
+  /** Seconds since the command; null before it. */
+  sinceS: number | null;
+  released: boolean;
+  mayWrite: boolean;
+  onRead: (string: StringNow, moment: 'before' | 'after') => void;
+  onStrike: (reading: TestReading) => void;
+}
+
+/** The strings of a round: what is reported of each now, what was measured, and the way to add a reading. */
+export function StringRows({ strings, timeLimitS, sinceS, released, mayWrite, onRead, onStrike }: Props) {
+  const moment = sinceS === null ? 'before' : 'after';
+  return (
+    <ul>
+      {strings.map((s) => {
+        const units = s.conduct?.units.filter((u) => u.serial !== null) ?? [];
+        const down = units.filter((u) => u.followed !== null || u.downBefore).length;
+        return (
+          <li key={s.part.id} className="border-b border-rule-faint py-2 last:border-b-0">
+            <div className="flex flex-wrap items-center justify-between gap-x-3 gap-y-1">
+              <div className="min-w-0">
+                <p className="text-[17px] font-semibold">{s.part.name}</p>
+                <p className="text-sm text-ink-2">
+                  {sinceS !== null &&
+                    s.part.kind !== 'shutdown_only' &&
+                    `${down} of ${units.length} in shutdown, `}
+                  {s.newest || s.points.length > 0
+                    ? s.source
+                    : s.part.kind === 'shutdown_only'
+                      ? 'its units tell nothing'
+                      : ''}
+                  {!s.part.homeRunLeavesArray && ' · home run inside the array'}
+                </p>
+              </div>
+              <div className="ml-auto flex flex-wrap items-center justify-end gap-2">
+                {!released && <Now s={s} timeLimitS={timeLimitS} sinceS={sinceS} />}
+                {mayWrite && !released && (
+                  <Button
+                    onClick={() => onRead(s, moment)}
+                    aria-label={`Reading of ${s.part.name} ${moment} the command`}
+                  >
+                    {moment === 'before' ? 'Read before' : 'Add reading'}
+                  </Button>
+                )}
+              </div>
+            </div>
+            {s.readings.map((r) => (
+              <p
+                key={r.id}
+                className={`mt-1 flex flex-wrap items-center gap-x-3 text-sm ${r.struck ? 'text-ink-2 line-through' : ''}`}
+              >
+                <span>
+                  ○ {readingWords(r)}
+                  {r.struck && ` (struck: ${r.struck.reason})`}
+                </span>
+                {mayWrite && !r.struck && (
+                  <button
+                    type="button"
+                    className="target text-petrol underline underline-offset-2"
+                    onClick={() => onStrike(r)}
+                  >
+                    Strike
+                  </button>
+                )}
+              </p>
+            ))}
+          </li>
+        );
+      })}
+    </ul>
+  );
+}
