@@ -3,6 +3,7 @@ import { DEMO_SEED, demoFleet } from '../simulator/scenarios/demo';
 import { seedHistory } from './history/fleet-history';
 import { clearFleet } from './plant/clear';
 import { seedPlant } from './plant/seed-plant';
+import { seedCommissioningRecords } from './records/commissioning';
 
 export const DEMO_PASSWORD = 'roof-ladder-meter';
 
@@ -25,6 +26,7 @@ export async function seed(knex: Knex): Promise<void> {
     if (there) await clearFleet(tx);
     const fleet = demoFleet(DEMO_SEED, since);
     const plant = await seedPlant(tx, fleet, { secret, password: DEMO_PASSWORD });
+    await seedCommissioningRecords(tx, plant, since);
     await seedHistory(tx, fleet, plant, (line) => console.log(line));
   });
   // All but the frames: those are only ever read by string and time, and statistics of their arrays cost seconds.

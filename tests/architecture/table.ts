@@ -25,6 +25,8 @@ export const FEATURES = [
   'walk',
   'membership',
   'handover',
+  'account',
+  'checks',
   'letters',
   'capture',
   'import',

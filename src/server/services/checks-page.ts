@@ -5,6 +5,7 @@ import { found } from '../errors';
 import { attachmentOut, attachmentsOfSite } from '../queries/attachments';
 import { visibleSite } from '../queries/visible-site';
 import { captureSnapshot } from './capture-snapshot';
+import { siteAndItsSteps } from './commissioning';
 
 /**
  * What the desk's pages of checks and readings show: the site as it stands, and its photos.
@@ -20,5 +21,6 @@ export async function checksPage(
   return {
     sheet: await captureSnapshot(tx, siteRef, person, now),
     files: (await attachmentsOfSite(tx, site.id)).map(attachmentOut),
+    steps: (await siteAndItsSteps(tx, siteRef)).steps,
   };
 }

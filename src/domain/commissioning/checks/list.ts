@@ -55,7 +55,7 @@ export const CHECKS: readonly CheckDefinition[] = [
   },
   {
     key: 'face',
-    name: 'Face towards the back sheet',
+    name: 'Face to the back sheet',
     asks: 'The unit’s face lies as its type allows.',
     how: 'Compare with the type’s sheet: which face may look at the back sheet.',
     source: PRACTICE,

@@ -1,0 +1,83 @@
+import { useState } from 'react';
+import { Button } from '../../components/ui/Button';
+import { Field } from '../../components/ui/Field';
+import { Notice } from '../../components/ui/Notice';
+import { ApiError, api } from '../../lib/api';
+import type { PairInput } from '../../schemas/api/equipment';
+import { paths } from '../../schemas/paths';
+
+interface Props {
+  pair: { first: string; second: string; words: string };
+  onRecorded: () => Promise<unknown>;
+}
+
+/** A manager names the document that says that two different connector types may be mated. */
+export function Evidence({ pair, onRecorded }: Props) {
+  const [open, setOpen] = useState(false);
+  const [form, setForm] = useState({ document: '', edition: '', page: '', note: '' });
+  const [refused, setRefused] = useState<ApiError | null>(null);
+  const [busy, setBusy] = useState(false);
+  if (!open)
+    return (
+      <div className="mt-2">
+        <Button onClick={() => setOpen(true)}>Record the document that allows this pair</Button>
+      </div>
+    );
+  const field = (key: keyof typeof form, label: string, hint?: string) => (
+    <Field
+      label={label}
+      hint={hint}
+      value={form[key]}
+      error={refused?.fault(key) ?? null}
+      onChange={(event) => setForm({ ...form, [key]: event.target.value })}
+    />
+  );
+  const save = async () => {
+    setBusy(true);
+    setRefused(null);
+    try {
+      const body: PairInput = { first: pair.first, second: pair.second, ...form };
+      await api(paths.api.connectorPairs(), { method: 'POST', body });
+      await onRecorded();
+    } catch (error) {
+      if (!(error instanceof ApiError)) throw error;
+      setRefused(error);
+    } finally {
+      setBusy(false);
+    }
+  };
+  return (
+    <form
+      noValidate
+      className="mt-3 space-y-3 border border-rule p-3"
+      onSubmit={(event) => {
+        event.preventDefault();
+        void save();
+      }}
+    >
+      <p className="text-ink-2">
+        {pair.words} Both makers must stand by it; that the halves click together proves nothing. It counts
+        for every string of the organisation.
+      </p>
+      <div className="grid gap-3 sm:grid-cols-3">
+        {field('document', 'Document')}
+        {field('edition', 'Edition or date')}
+        {field('page', 'Page or table')}
+      </div>
+      {field('note', 'Note')}
+      {refused && (
+        <Notice kind="failed" title="Not recorded">
+          {refused.message}
+        </Notice>
+      )}
+      <div className="flex flex-wrap gap-2">
+        <Button type="submit" weight="primary" disabled={busy}>
+          Record the evidence
+        </Button>
+        <Button onClick={() => setOpen(false)} disabled={busy}>
+          Cancel
+        </Button>
+      </div>
+    </form>
+  );
+}

@@ -1,0 +1,178 @@
+import { useState } from 'react';
+import { undocumentedPair } from '../../domain/commissioning/checks/connectors';
+import { Button, ButtonLink } from '../../components/ui/Button';
+import { Notice } from '../../components/ui/Notice';
+import { Sheet } from '../../components/ui/Sheet';
+import { SiteTime } from '../../components/ui/Time';
+import type { ChecksPage } from '../../schemas/api/checks-page';
+import { paths } from '../../schemas/paths';
+import { CellMark } from './CellMark';
+import { Evidence } from './Evidence';
+import { AddPhotos, Photos } from './Photos';
+import { RecordForm } from './RecordForm';
+import { figureText, type Cell, type StringRow } from './rows';
+import type { Signing } from './signing';
+import { MARK_WORDS } from './words';
+
+interface Props {
+  page: ChecksPage;
+  row: StringRow;
+  mayWrite: boolean;
+  mayRecordEvidence: boolean;
+  signing: Signing;
+  onChanged: () => Promise<unknown>;
+  onClose: () => void;
+}
+
+/** One string: what blocks its signature, then every check with its record, photos and figures. */
+export function StringChecks(props: Props) {
+  const { page, row, mayWrite, signing, onClose } = props;
+  const { string, state, status } = row;
+  const { timeZone } = page.sheet.site;
+  const missing = state.blocks.filter((b) => b.kind === 'missing').length;
+  return (
+    <Sheet
+      id="string"
+      title={`${string.name}: ${state.recorded} of ${state.asked} checks recorded`}
+      aside={
+        <span className="flex flex-wrap items-center gap-2">
+          <ButtonLink href={paths.string(page.sheet.site.id, string.id)}>Open {string.name}</ButtonLink>
+          <Button onClick={onClose}>Close</Button>
+        </span>
+      }
+    >
+      {row.amiss.length > 0 && (
+        <ul className="mb-3 space-y-2">
+          {row.amiss.map((b) => (
+            <li key={b.check} className="rounded bg-rust-wash px-3 py-2 text-rust-ink">
+              <strong className="font-semibold">{b.words}</strong> {b.remedy}
+            </li>
+          ))}
+        </ul>
+      )}
+      <div className="mb-2 flex flex-wrap items-center gap-3">
+        {string.signOff && (
+          <p>
+            Signed by {string.signOff.person},{' '}
+            <SiteTime at={string.signOff.at} now={page.sheet.at} timeZone={timeZone} zone />.{' '}
+            {string.signOff.stale && (
+              <strong className="font-semibold text-rust-ink">
+                Something was recorded since: the signature no longer holds.
+              </strong>
+            )}
+          </p>
+        )}
+        {mayWrite && status === 'ready' && (
+          <Button weight="primary" disabled={signing.busy} onClick={() => void signing.sign([row])}>
+            Sign {string.name} off
+          </Button>
+        )}
+        {missing > 0 && (
+          <p className="text-ink-2">
+            {missing} {missing === 1 ? 'check' : 'checks'} still to record before it can be signed.
+          </p>
+        )}
+      </div>
+      {status === 'ready' && state.remarks.length > 0 && (
+        <details className="mb-3 text-ink-2">
+          <summary className="target inline-flex cursor-pointer items-center">
+            Worth knowing before signing ({state.remarks.length})
+          </summary>
+          <ul className="list-disc pl-5">
+            {state.remarks.map((r) => (
+              <li key={r}>{r}</li>
+            ))}
+          </ul>
+        </details>
+      )}
+      <ol className="divide-y divide-rule-faint border-t border-rule-faint">
+        {row.cells.map((cell) => (
+          <CheckItem key={cell.check.key} cell={cell} {...props} />
+        ))}
+      </ol>
+    </Sheet>
+  );
+}
+
+function CheckItem({ page, row, cell, mayWrite, mayRecordEvidence, onChanged }: Props & { cell: Cell }) {
+  const [editing, setEditing] = useState(false);
+  const { check, record, judged, mark, photos } = cell;
+  const { site } = page.sheet;
+  const figures = figureText(cell, row.context.connectors);
+  const pair = record && judged?.fireRisk ? undocumentedPair(record.figures, row.context) : null;
+  return (
+    <li id={`check-${check.key}`} className="flex gap-3 py-3">
+      <CellMark mark={mark} />
+      <div className="min-w-0 flex-1">
+        <div className="flex flex-wrap items-baseline justify-between gap-x-4">
+          <h3 className="font-semibold">
+            {check.name}
+            <span className="font-normal text-ink-2">: {MARK_WORDS[mark]}</span>
+          </h3>
+          {record && (
+            <p className="text-sm text-ink-2">
+              {record.person}, <SiteTime at={record.at} now={page.sheet.at} timeZone={site.timeZone} />
+            </p>
+          )}
+        </div>
+        <p className="text-ink-2">{check.asks}</p>
+        {(figures || record?.reason || record?.note) && (
+          <p className="mt-0.5">{[figures, record?.reason, record?.note].filter(Boolean).join('. ')}</p>
+        )}
+        {check.warning && !record && <Notice kind="stale" title={check.warning} />}
+        {judged && judged.words.length > 0 && (
+          <p className={`mt-1 ${judged.weight === 'blocks' ? 'text-rust-ink' : 'text-ink-2'}`}>
+            {judged.words.join(' ')} {judged.remedy} <span className="text-sm">({judged.source})</span>
+          </p>
+        )}
+        <Photos
+          photos={photos}
+          of={`${row.string.name}, ${check.name.toLowerCase()}`}
+          now={page.sheet.at}
+          timeZone={site.timeZone}
+        />
+        {pair && mayRecordEvidence && <Evidence pair={pair} onRecorded={onChanged} />}
+        {pair && !mayRecordEvidence && (
+          <p className="mt-1 text-sm text-ink-2">
+            A manager can record the document that allows this pair, if there is one.
+          </p>
+        )}
+        {editing ? (
+          <>
+            <p className="mt-2 text-sm text-ink-2">
+              {check.how} <span>({check.source})</span>
+            </p>
+            <RecordForm
+              sheet={page.sheet}
+              row={row}
+              cell={cell}
+              onCancel={() => setEditing(false)}
+              onSaved={async () => {
+                await onChanged();
+                setEditing(false);
+              }}
+            />
+          </>
+        ) : (
+          mayWrite && (
+            <div className="mt-1 flex flex-wrap items-start gap-x-4">
+              <Button className="mt-2" onClick={() => setEditing(true)}>
+                {record ? 'Record again' : 'Record'}
+              </Button>
+              {record && (
+                <AddPhotos
+                  site={site.id}
+                  string={row.string.id}
+                  subject="install_check"
+                  subjectRef={record.ref}
+                  label="Add photos"
+                  onStored={onChanged}
+                />
+              )}
+            </div>
+          )
+        )}
+      </div>
+    </li>
+  );
+}
