@@ -29,7 +29,7 @@ beforeAll(async () => {
 afterAll(() => db.drop());
 
 const attempt = (email: string, password = PASSWORD, address = '127.0.0.1', keep = false) =>
-  signIn({ email, password, keep, address });
+  signIn({ email, password, keep, address, agent: null }, new Date());
 const failure = async (work: Promise<unknown>): Promise<AppError> => {
   try {
     await work;

@@ -7,4 +7,4 @@ export interface ShellActor {
   role: Role;
 }
 export type Theme = 'system' | 'light' | 'dark';
-export type StaffNav = 'fleet' | 'commissioning' | 'shutdown' | 'equipment' | null;
+export type StaffNav = 'fleet' | 'commissioning' | 'shutdown' | 'equipment' | 'people' | null;

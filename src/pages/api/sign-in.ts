@@ -5,7 +5,10 @@ import { publicEndpoint } from '../../server/http/endpoint';
 import { signIn } from '../../server/services/sign-in';
 
 export const POST = publicEndpoint({ permission: 'public', body: signInBody }, async ({ body, context }) => {
-  const { cookie, role } = await signIn({ ...body, address: context.clientAddress });
+  const { cookie, role } = await signIn(
+    { ...body, address: context.clientAddress, agent: context.request.headers.get('user-agent') },
+    new Date(),
+  );
   const home = role === 'customer' ? paths.customerHome() : paths.fleet();
   return new Response(JSON.stringify({ next: returnPath(body.next, home) }), {
     headers: { 'content-type': 'application/json', 'set-cookie': cookie },

@@ -7,6 +7,7 @@ export const signInBody = z.strictObject({
     .union([z.boolean(), z.literal('on')])
     .optional()
     .transform((v) => v === true || v === 'on'),
+  code: z.string().trim().max(30).optional(),
   next: z.string().max(500).optional(),
 });
 export const signInReply = z.object({ next: z.string() });

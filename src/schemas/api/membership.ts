@@ -14,6 +14,8 @@ export const membershipUnit = z.object({
   position: z.int(),
   serial: z.string(),
   outcome: z.enum(MEMBERSHIP_OUTCOMES),
+  /** False: it does not carry its own string's current, whether or not it is known whose it carries. */
+  fitsOwn: z.boolean(),
   otherString: z.string().nullable(),
   otherStringId: id.nullable(),
   /** Median of |its current / the string's − 1|, 0 … ; null: never enough current together. */
@@ -34,6 +36,8 @@ export const membershipSuspect = membershipUnit.extend({
     at: z.array(z.number()), // epoch seconds
     unit: z.array(z.number().nullable()),
     own: z.array(z.number().nullable()),
+    /** Whose current `other` is: the string that fits best, or the counterpart's. */
+    otherName: z.string().nullable(),
     other: z.array(z.number().nullable()),
   }),
 });
@@ -56,6 +60,7 @@ export const membershipPage = z.object({
     steps: z.int(),
     withCurrent: z.int(),
   }),
+  /** `elsewhere` counts units that don't fit their own string, also where several others fit alike. */
   counts: z.object({
     here: z.int(),
     elsewhere: z.int(),

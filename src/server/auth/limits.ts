@@ -58,3 +58,36 @@ export const takeSigningTry = (personId: number): Promise<void> =>
 export async function forgiveSigner(personId: number): Promise<void> {
   await signingLimit().delete(String(personId));
 }
+
+interface LetterLimits {
+  address: RateLimiterPostgres;
+  account: RateLimiterPostgres;
+  token: RateLimiterPostgres;
+  code: RateLimiterPostgres;
+}
+let letters: LetterLimits | undefined;
+/** Letters: 3 an hour to one address, 20 from one place. Links tried: 60 in 15 minutes. Codes: 8 of one person in 15 minutes. */
+const letterLimits = (): LetterLimits =>
+  (letters ??= {
+    account: limiter('letter_account', 3, 3600),
+    address: limiter('letter_address', 20, 3600),
+    token: limiter('token', 60, 900),
+    code: limiter('code', 8, 900),
+  });
+
+/** Counts a letter that somebody asked for; throws `too_many` with the wait, whether the account exists or not. */
+export async function takeLetterTry(email: string, address: string): Promise<void> {
+  await take(letterLimits().address, address, 'ask for a letter');
+  await take(letterLimits().account, email.trim().toLowerCase(), 'ask for a letter');
+}
+
+/** Counts a link of a letter that somebody tries from an address. */
+export const takeTokenTry = (address: string): Promise<void> =>
+  take(letterLimits().token, address, 'use a link');
+
+/** Counts a one-time code that somebody tries; a right one clears the count. */
+export const takeCodeTry = (personId: number): Promise<void> =>
+  take(letterLimits().code, String(personId), 'use a code');
+export async function forgiveCodes(personId: number): Promise<void> {
+  await letterLimits().code.delete(String(personId));
+}

@@ -5,6 +5,7 @@ import type { Actor, Role } from '../../domain/access/permissions';
 import { config } from '../config';
 import { signInPool } from '../db/pools';
 import { personOfSession } from '../queries/people';
+import { describeSession } from '../queries/sessions';
 import { initialsOf, type Theme, type Viewer } from './viewer';
 
 interface PersonAttributes {
@@ -18,20 +19,22 @@ declare module 'lucia' {
   }
 }
 
-const hashed = (sessionId: string) => createHash('sha256').update(sessionId).digest('hex');
+/** What the database knows a session by. */
+export const sessionHash = (sessionId: string): string =>
+  createHash('sha256').update(sessionId).digest('hex');
 
 /** Keeps only a hash of each session's id: whoever reads the table cannot sign in with it. */
 function hashingAdapter(): Adapter {
   const inner = new NodePostgresAdapter(signInPool(), { user: 'person', session: 'session' });
   return {
     getSessionAndUser: async (id) => {
-      const [session, user] = await inner.getSessionAndUser(hashed(id));
+      const [session, user] = await inner.getSessionAndUser(sessionHash(id));
       return [session && { ...session, id }, user];
     },
     getUserSessions: (userId) => inner.getUserSessions(userId),
-    setSession: (session: DatabaseSession) => inner.setSession({ ...session, id: hashed(session.id) }),
-    updateSessionExpiration: (id, expiresAt) => inner.updateSessionExpiration(hashed(id), expiresAt),
-    deleteSession: (id) => inner.deleteSession(hashed(id)),
+    setSession: (session: DatabaseSession) => inner.setSession({ ...session, id: sessionHash(session.id) }),
+    updateSessionExpiration: (id, expiresAt) => inner.updateSessionExpiration(sessionHash(id), expiresAt),
+    deleteSession: (id) => inner.deleteSession(sessionHash(id)),
     deleteUserSessions: (userId) => inner.deleteUserSessions(userId),
     deleteExpiredSessions: () => inner.deleteExpiredSessions(),
   };
@@ -76,7 +79,7 @@ export async function signedInBy(cookieHeader: string): Promise<SignedIn | { coo
     const sessionId = lucia.readSessionCookie(cookieHeader);
     if (!sessionId) continue;
     const found = await validated(lucia, sessionId);
-    const person = found && (await personOfSession(found.user.id));
+    const person = found && (await personOfSession(found.user.id, sessionHash(sessionId)));
     if (!found || !person) {
       blanks.push(lucia.createBlankSessionCookie().serialize());
       continue;
@@ -114,10 +117,15 @@ export async function actorOfCookie(
   return 'actor' in found ? { actor: found.actor, sessionId: found.sessionId } : null;
 }
 
-/** A new session for a person; returns the cookie to set. */
-export async function openSession(personId: number, kept: boolean): Promise<string> {
+/** A new session for a person, from where and with what; returns the cookie to set. */
+export async function openSession(
+  personId: number,
+  kept: boolean,
+  from: { address: string | null; agent: string | null } = { address: null, agent: null },
+): Promise<string> {
   const lucia = lucias()[kept ? 0 : 1];
   const session = await lucia.createSession(personId, {});
+  await describeSession(sessionHash(session.id), { ...from, kept });
   return lucia.createSessionCookie(session.id).serialize();
 }
 

@@ -18,6 +18,14 @@ export function asActor<T>(
   });
 }
 
+/** In a sign-in transaction: from here on it writes for this organisation (its letters, its audit), and for no site. */
+export async function actFor(tx: Tx, organisationId: number): Promise<void> {
+  await tx.raw(
+    `select set_config('wakeline.organisation', ?, true), set_config('wakeline.sites', '', true)`,
+    [String(organisationId)],
+  );
+}
+
 /** Runs `work` for ingest, judgement and jobs, which serve every organisation. */
 export function asIngest<T>(work: (tx: Tx) => Promise<T>): Promise<T> {
   return database('ingest').transaction(work);

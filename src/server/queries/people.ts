@@ -13,29 +13,48 @@ export interface PersonRow {
   sites: number[];
 }
 
-/** The person behind a valid session, with the sites that a customer was given; undefined when deactivated. */
-export async function personOfSession(personId: number): Promise<PersonRow | undefined> {
+/**
+ * The person behind a valid session, with the sites that a customer was given; undefined when deactivated. Notes that
+ * the session is used and its person was here, at most every five minutes.
+ */
+export async function personOfSession(personId: number, sessionHash: string): Promise<PersonRow | undefined> {
   return asSignIn(async (tx) => {
     const { rows } = await tx.raw<{ rows: PersonRow[] }>(
-      `select p.id, p.ref, p.organisation_id as "organisationId", o.name as "organisationName", o.time_zone as "timeZone", p.email, p.name, p.role, p.theme,
+      `with used as (
+         update session set used_at = now() where id = ? and used_at < now() - interval '5 minutes' returning user_id),
+       here as (update person set last_seen_at = now() where id in (select user_id from used))
+       select p.id, p.ref, p.organisation_id as "organisationId", o.name as "organisationName", o.time_zone as "timeZone", p.email, p.name, p.role, p.theme,
               coalesce((select array_agg(site_id) from site_access a where a.person_id = p.id), '{}') as sites
        from person p join organisation o on o.id = p.organisation_id
        where p.id = ? and p.active`,
-      [personId],
+      [sessionHash, personId],
     );
     return rows[0];
   });
 }
 
+export interface Credentials {
+  id: number;
+  organisationId: number;
+  name: string;
+  email: string;
+  role: string;
+  passwordHash: string;
+  /** Set where sign-in asks for a code as well. */
+  secondFactorSince: Date | null;
+}
+
 /** What sign-in compares; undefined when no active person has the address. */
-export async function credentialsOf(
-  email: string,
-): Promise<{ id: number; organisationId: number; passwordHash: string; role: string } | undefined> {
+export async function credentialsOf(email: string): Promise<Credentials | undefined> {
   return asSignIn((tx) =>
     tx('person')
       .whereRaw('lower(email) = lower(?)', [email])
       .where('active', true)
-      .first('id', 'role', { organisationId: 'organisation_id', passwordHash: 'password_hash' }),
+      .first<Credentials | undefined>('id', 'role', 'name', 'email', {
+        organisationId: 'organisation_id',
+        passwordHash: 'password_hash',
+        secondFactorSince: 'totp_confirmed_at',
+      }),
   );
 }
 

@@ -2,6 +2,7 @@ import type { EventKind, InForce } from '../../domain/verdicts/codes';
 import type { SitePage, LoggerNow, ZoneNow } from '../../schemas/api/site';
 import type { CommandNow, EventItem } from '../../schemas/api/now';
 import type { Tx } from '../db/transaction';
+import { gravestTestOf } from './shutdown-tests';
 import { SITE_VISIBLE } from './visible-site';
 
 const iso = (at: Date | null): string | null => at?.toISOString() ?? null;
@@ -36,9 +37,7 @@ export async function siteFacts(tx: Tx, ref: string): Promise<SiteFacts | undefi
             t.at as "testAt", t.result as "testResult", t.made_by as "testBy"
      from site
      left join roll_call r on r.site_id = site.id and r.stopped_at is null
-     left join lateral (
-       select at, result, made_by from shutdown_test
-       where site_id = site.id and superseded_by is null order by at desc limit 1) t on true
+     left join lateral ${gravestTestOf('site.id')} t on true
      where site.ref = :ref and ${SITE_VISIBLE}`,
     { ref },
   );
@@ -154,4 +153,12 @@ export async function eventsOfSite(
     })),
     before: rows.length > wanted.limit && last ? `${last.micros}.${last.id}` : null,
   };
+}
+
+/** Sites that the actor sees, for choosing among them; by name. */
+export async function siteChoices(tx: Tx): Promise<{ id: string; name: string }[]> {
+  const { rows } = await tx.raw<{ rows: { id: string; name: string }[] }>(
+    `select site.ref as id, site.name from site where ${SITE_VISIBLE} order by site.name`,
+  );
+  return rows;
 }

@@ -1,0 +1,53 @@
+import { useQuery } from '@tanstack/react-query';
+import { Heading } from '../../components/ui/Heading';
+import { Sheet } from '../../components/ui/Sheet';
+import { api } from '../../lib/api';
+import { queryClient } from '../../lib/query-client';
+import { paths } from '../../schemas/paths';
+import type { AccountPage } from '../../schemas/api/my-account';
+import { EmailForm, PasswordForm } from './CredentialForms';
+import { SecondFactor } from './SecondFactor';
+import { Sessions } from './Sessions';
+
+const KEY = ['account'];
+
+/** One's own account: password, address, second factor, where one is signed in. */
+export function Account({ initial }: { initial: AccountPage }) {
+  const client = queryClient();
+  const { data: page } = useQuery(
+    {
+      queryKey: KEY,
+      queryFn: ({ signal }) => api<AccountPage>(paths.api.account(), { signal }),
+      initialData: initial,
+    },
+    client,
+  );
+  const again = () => void client.invalidateQueries({ queryKey: KEY });
+  const others = page.sessions.filter((s) => !s.here).length;
+  return (
+    <>
+      <Heading
+        finding={
+          others === 0
+            ? 'You are signed in on this device only'
+            : `You are signed in on ${others + 1} devices`
+        }
+        sentence={`${page.person.name}, ${page.person.role} of ${page.person.organisation}. You sign in with ${page.person.email}.`}
+      />
+      <div className="grid gap-5 lg:grid-cols-2">
+        <div className="grid content-start gap-5">
+          <Sessions page={page} onChanged={again} />
+          <SecondFactor page={page} onChanged={again} />
+        </div>
+        <div className="grid content-start gap-5">
+          <Sheet id="password" title="Password">
+            <PasswordForm email={page.person.email} onChanged={again} />
+          </Sheet>
+          <Sheet id="email" title="Address">
+            <EmailForm email={page.person.email} />
+          </Sheet>
+        </div>
+      </div>
+    </>
+  );
+}

@@ -1,0 +1,132 @@
+import { useState } from 'react';
+import { Button } from '../../components/ui/Button';
+import { Field } from '../../components/ui/Field';
+import { Notice } from '../../components/ui/Notice';
+import { PASSWORD_MIN } from '../../domain/access/password';
+import { paths } from '../../schemas/paths';
+import { useSending } from './send';
+
+/** What was wrong with the whole, where no field carries it. */
+function Whole({
+  fault,
+  fields,
+}: {
+  fault: ReturnType<typeof useSending>['fault'];
+  fields: readonly string[];
+}) {
+  if (!fault || fields.some((f) => fault.fault(f))) return null;
+  return (
+    <p role="alert" className="font-medium text-rust-ink">
+      {fault.message}
+    </p>
+  );
+}
+
+export function PasswordForm({ email, onChanged }: { email: string; onChanged: () => void }) {
+  const [current, setCurrent] = useState('');
+  const [password, setPassword] = useState('');
+  const [done, setDone] = useState(false);
+  const { busy, fault, send } = useSending();
+  const change = async () => {
+    setDone(false);
+    const { taken } = await send(paths.api.accountPassword(), { method: 'PUT', body: { current, password } });
+    if (!taken) return;
+    setCurrent('');
+    setPassword('');
+    setDone(true);
+    onChanged();
+  };
+  return (
+    <form
+      className="grid gap-4"
+      noValidate
+      onSubmit={(event) => {
+        event.preventDefault();
+        void change();
+      }}
+    >
+      <input type="hidden" autoComplete="username" value={email} />
+      {done && !fault && (
+        <Notice kind="done" title="Your password is changed; other devices were signed out." />
+      )}
+      <Whole fault={fault} fields={['current', 'password']} />
+      <Field
+        label="Current password"
+        type="password"
+        autoComplete="current-password"
+        value={current}
+        error={fault?.fault('current')}
+        onChange={(event) => setCurrent(event.target.value)}
+      />
+      <Field
+        label="New password"
+        type="password"
+        autoComplete="new-password"
+        value={password}
+        hint={`At least ${PASSWORD_MIN} characters. Three or four words do well.`}
+        error={fault?.fault('password')}
+        onChange={(event) => setPassword(event.target.value)}
+      />
+      <div>
+        <Button type="submit" weight="primary" disabled={busy}>
+          Change the password
+        </Button>
+      </div>
+    </form>
+  );
+}
+
+export function EmailForm({ email }: { email: string }) {
+  const [current, setCurrent] = useState('');
+  const [wanted, setWanted] = useState('');
+  const [sentTo, setSentTo] = useState('');
+  const { busy, fault, send } = useSending();
+  const ask = async () => {
+    setSentTo('');
+    const { taken } = await send(paths.api.accountEmail(), {
+      method: 'PUT',
+      body: { current, email: wanted },
+    });
+    if (!taken) return;
+    setCurrent('');
+    setSentTo(wanted);
+  };
+  return (
+    <form
+      className="grid gap-4"
+      noValidate
+      onSubmit={(event) => {
+        event.preventDefault();
+        void ask();
+      }}
+    >
+      {sentTo && !fault && (
+        <Notice kind="done" title={`A letter is on its way to ${sentTo}`}>
+          Your address changes when the link in it is used. Until then you sign in with {email}.
+        </Notice>
+      )}
+      <Whole fault={fault} fields={['current', 'email']} />
+      <Field
+        label="New address"
+        type="email"
+        autoComplete="email"
+        value={wanted}
+        error={fault?.fault('email')}
+        onChange={(event) => setWanted(event.target.value)}
+      />
+      <Field
+        label="Current password"
+        type="password"
+        autoComplete="current-password"
+        value={current}
+        error={fault?.fault('current')}
+        onChange={(event) => setCurrent(event.target.value)}
+      />
+      <div>
+        <Button type="submit" disabled={busy}>
+          Send the letter
+        </Button>
+      </div>
+    </form>
+  );
+}

@@ -1,0 +1,51 @@
+import { Button } from '../../components/ui/Button';
+import { Sheet } from '../../components/ui/Sheet';
+import { Tag } from '../../components/ui/Tag';
+import { RelativeTime } from '../../components/ui/Time';
+import { paths } from '../../schemas/paths';
+import type { AccountPage } from '../../schemas/api/my-account';
+import { useSending } from './send';
+
+/** Where one is signed in, and the way out of each. */
+export function Sessions({ page, onChanged }: { page: AccountPage; onChanged: () => void }) {
+  const { busy, fault, send } = useSending();
+  const others = page.sessions.filter((s) => !s.here);
+  const end = async (key?: string) => {
+    await send(paths.api.accountSessions(), { method: 'DELETE', body: key ? { key } : {} });
+    onChanged();
+  };
+  return (
+    <Sheet id="sessions" title="Where you are signed in">
+      {fault && (
+        <p role="alert" className="mb-2 font-medium text-rust-ink">
+          {fault.message}
+        </p>
+      )}
+      <ul className="divide-y divide-rule-faint">
+        {page.sessions.map((s) => (
+          <li key={s.key} className="flex flex-wrap items-center justify-between gap-x-4 gap-y-1 py-2.5">
+            <div className="min-w-0">
+              <p className="font-medium">{s.device}</p>
+              <p className="text-sm text-ink-2">
+                {s.address ? `from ${s.address}, ` : ''}used{' '}
+                <RelativeTime at={s.usedAt} now={page.at} timeZone={page.person.timeZone} />
+              </p>
+            </div>
+            {s.here ? (
+              <Tag tone="petrol">this device</Tag>
+            ) : (
+              <Button disabled={busy} onClick={() => void end(s.key)}>
+                Sign it out
+              </Button>
+            )}
+          </li>
+        ))}
+      </ul>
+      {others.length > 1 && (
+        <Button className="mt-3" disabled={busy} onClick={() => void end()}>
+          Sign out everywhere else
+        </Button>
+      )}
+    </Sheet>
+  );
+}
