@@ -1,3 +1,4 @@
+import { gravestTestOf } from './shutdown-tests';
 import type { SiteUnderWay } from '../../schemas/api/commissioning';
 import type { Tx } from '../db/transaction';
 import { SITE_VISIBLE, type VisibleSite } from './visible-site';
@@ -72,9 +73,7 @@ export async function sitesUnderWay(tx: Tx, siteId?: number): Promise<SiteUnderW
      cross join lateral (
        select count(distinct string_id)::int as strings, max(at) as last_at from meter_reading where site_id = u.id
      ) reading
-     left join lateral (
-       select at, result from shutdown_test where site_id = u.id and superseded_by is null order by at desc limit 1
-     ) test on true
+     left join lateral ${gravestTestOf('u.id')} test on true
      order by u.name`,
     { siteId: siteId ?? null },
   );

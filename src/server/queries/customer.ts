@@ -1,5 +1,6 @@
 import type { CustomerSite } from '../../schemas/api/customer';
 import type { Tx } from '../db/transaction';
+import { gravestTestOf } from './shutdown-tests';
 import { SITE_VISIBLE } from './visible-site';
 
 /** What the owner's page needs beside the state of the moment. The site's number was found as the actor. */
@@ -149,7 +150,7 @@ export async function daysOf(tx: Tx, siteId: number, from: string, before: strin
   return row;
 }
 
-/** The newest shutdown test that no later one corrects. */
+/** The shutdown test in force; where a site has several zones, the gravest of theirs. */
 export async function lastTestOf(tx: Tx, siteId: number): Promise<CustomerSite['lastTest']> {
   const { rows } = await tx.raw<{
     rows: {
@@ -158,11 +159,7 @@ export async function lastTestOf(tx: Tx, siteId: number): Promise<CustomerSite['
       strings: number;
       madeBy: string;
     }[];
-  }>(
-    `select at, result, strings, made_by as "madeBy" from shutdown_test
-     where site_id = ? and superseded_by is null order by at desc limit 1`,
-    [siteId],
-  );
+  }>(`select at, result, strings, made_by as "madeBy" from ${gravestTestOf('?')} test`, [siteId]);
   const [test] = rows;
   return test ? { ...test, at: test.at.toISOString() } : null;
 }

@@ -6,6 +6,16 @@ import { SITE_VISIBLE } from './visible-site';
 
 /** Drafts of shutdown tests, what was done in them, and the signed ones. The caller found the site as the actor. */
 
+/**
+ * What the tests of a site amount to, as a subquery: the newest that stands of each zone, the gravest of them first.
+ * `site` is the site's number, a column or a binding.
+ */
+export const gravestTestOf = (site: string): string => `(
+  select newest.* from (
+    select distinct on (t.zone_id) t.* from shutdown_test t where t.site_id = ${site} and t.superseded_by is null
+    order by t.zone_id, t.at desc, t.id desc) newest
+  order by array_position(array['failed', 'not_witnessed', 'consistent', 'passed'], newest.result), newest.at desc limit 1)`;
+
 export interface TestHead {
   draftId: number;
   ref: string;
