@@ -1,12 +1,16 @@
 import { randomUUID } from 'node:crypto';
 import { get, type Route, type Target } from './route';
 import { DESIGN_AND_EQUIPMENT } from './routes-equipment';
+import { HANDOVER } from './routes-handover';
+import { PEOPLE_AND_ACCOUNTS } from './routes-people';
 
 export type { Route, Target } from './route';
 
 /** Every route of the product. A file under src/pages that is not here fails the matrix. */
 export const ROUTES: readonly Route[] = [
   ...DESIGN_AND_EQUIPMENT,
+  ...HANDOVER,
+  ...PEOPLE_AND_ACCOUNTS,
   // pages
   get('index.astro', 'fleet.read', 'nothing', () => '/'),
   get('shutdown.astro', 'shutdown.read', 'nothing', () => '/shutdown'),
