@@ -270,7 +270,8 @@ export class SitePlant {
         if (slot.serial !== null) this.seats.set(slot.serial, { string: s, index });
       });
     for (const { serial, seat } of this.plan.strangers) {
-      const string = seat && this.byName.get(seat.string);
+      if (!seat) continue;
+      const string = this.byName.get(seat.string);
       const drawn = string?.plan.slots[seat.position - 1]?.serial;
       if (!string || !drawn) continue;
       this.seats.delete(drawn);

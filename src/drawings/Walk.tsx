@@ -1,8 +1,9 @@
 import { conditionOf, CONDITION_WORDS, type Condition, type DrawnSlot } from './condition';
 import { listed } from './numbers';
 import { SCREEN, type Paint } from './paint';
+import { across, focusOn, rowsOf, sheetOf, spanOf, type Point } from './walk-geometry';
 
-export interface WalkString {
+export interface WalkedString {
   name: string;
   /** In position order; slots without a place on the roof are left out of the line. */
   slots: readonly (DrawnSlot & { roofX: number | null; roofY: number | null })[];
@@ -10,143 +11,251 @@ export interface WalkString {
 interface Props {
   /** Roof outline in metres, y to the north. */
   outline: readonly (readonly [number, number])[];
-  /** The first is walked, others stand behind it in grey. */
-  strings: readonly WalkString[];
+  strings: readonly WalkedString[];
+  /** Names of the strings that are walked: in ink, with their ends named. The others stand behind. */
+  walked: ReadonlySet<string>;
+  /** Marked slots as "B3-5"; absent: every exception of the strings that are walked. */
+  marked?: ReadonlySet<string>;
+  /** Marked slots that are done: drawn with a tick. */
+  done?: ReadonlySet<string>;
+  /** Stops in the order of the path, to draw it. */
+  route?: readonly Point[];
+  /** Draws closer, on the part of the roof where the walk is. */
+  close?: boolean;
   width?: number;
   paint?: Paint;
 }
 
-const MARKED: ReadonlySet<Condition> = new Set(['stuck', 'not_shutting_down', 'silent', 'unheard']);
+const EXCEPTIONS: ReadonlySet<Condition> = new Set([
+  'stuck',
+  'not_shutting_down',
+  'silent',
+  'unheard',
+  'empty',
+]);
+const TEXT = { fontFamily: 'inherit', fontWeight: 600 } as const;
+const round = (n: number): string => n.toFixed(1);
+const lineOf = (points: readonly Point[]): string =>
+  `M${points.map((p) => `${round(p.x)} ${round(p.y)}`).join('L')}`;
 
-/** A string's path over the roof, ticks for its units, only the exceptions marked: how a person finds position 9. */
-export function Walk({ outline, strings, width = 680, paint = SCREEN }: Props) {
-  const placed = strings.map((s) => ({
-    name: s.name,
-    slots: s.slots.flatMap((slot) =>
-      slot.roofX === null || slot.roofY === null ? [] : [{ ...slot, x: slot.roofX, y: slot.roofY }],
-    ),
-  }));
-  const all = [...outline.map(([x, y]) => ({ x, y })), ...placed.flatMap((s) => s.slots)];
-  if (all.length === 0) return null;
-  const west = Math.min(...all.map((p) => p.x));
-  const east = Math.max(...all.map((p) => p.x));
-  const south = Math.min(...all.map((p) => p.y));
-  const north = Math.max(...all.map((p) => p.y));
-  const margin = 28;
-  const scale = (width - 2 * margin) / Math.max(1, east - west);
-  const height = (north - south) * scale + 2 * margin;
-  const at = (p: { x: number; y: number }) => ({
-    x: margin + (p.x - west) * scale,
-    y: margin + (north - p.y) * scale,
-  });
-  const words = placed
-    .map((s) => {
-      const marked = s.slots.filter((slot) => MARKED.has(conditionOf(slot)));
-      return marked.length
-        ? `${s.name}: ${listed(marked.map((m) => `${m.position} ${CONDITION_WORDS[conditionOf(m)]}`))}`
-        : '';
-    })
-    .filter(Boolean)
-    .join('. ');
+interface Mark {
+  position: number;
+  condition: Condition;
+  at: Point;
+  done: boolean;
+}
+
+function MarkBox({ mark, paint, size }: { mark: Mark; paint: Paint; size: number }) {
+  const { condition, at } = mark;
+  const fill =
+    condition === 'stuck' ? paint.rust : condition === 'not_shutting_down' ? paint.crimson : paint.sheet;
+  const solid = fill !== paint.sheet;
   return (
-    <svg
-      viewBox={`0 0 ${width} ${height.toFixed(0)}`}
-      width="100%"
-      role="img"
-      aria-label={`Roof with the path of ${listed(placed.map((s) => s.name))}. ${words}`}
-      style={{ height: 'auto' }}
-    >
-      {outline.length > 2 && (
+    <g opacity={mark.done ? 0.55 : undefined}>
+      <rect
+        x={at.x - size / 2}
+        y={at.y - size / 2}
+        width={size}
+        height={size}
+        fill={fill}
+        stroke={solid ? fill : paint.ink}
+        strokeWidth="1.5"
+        strokeDasharray={condition === 'unheard' || condition === 'empty' ? '3 2.5' : undefined}
+      />
+      {condition === 'silent' && (
         <path
-          d={`M${outline
-            .map(([x, y]) => {
-              const p = at({ x, y });
-              return `${p.x.toFixed(1)} ${p.y.toFixed(1)}`;
-            })
-            .join('L')}Z`}
-          fill={paint.sheet}
+          d={`M${at.x - size / 2} ${at.y + size / 2}l${size} ${-size}`}
+          stroke={paint.slate}
+          strokeWidth="1"
+        />
+      )}
+      <text
+        x={at.x}
+        y={at.y + size * 0.22}
+        textAnchor="middle"
+        fontSize={size * 0.62}
+        fill={solid ? paint.sheet : paint.ink}
+        {...TEXT}
+        fontWeight="700"
+      >
+        {mark.position}
+      </text>
+      {mark.done && (
+        <path
+          d={`M${at.x - size * 0.4} ${at.y - size * 0.75}l${size * 0.25} ${size * 0.25} ${size * 0.5} ${-size * 0.5}`}
+          fill="none"
           stroke={paint.ink}
           strokeWidth="2"
         />
       )}
-      <g transform={`translate(${width - margin - 22} ${margin + 12})`} fill={paint.ink}>
-        <path d="M0 18 8 -2 16 18 8 13Z" />
-        <text x="8" y="33" textAnchor="middle" fontSize="13" fontFamily="inherit">
+    </g>
+  );
+}
+
+/** Strings' paths over the roof, ticks for their units, only the exceptions marked: how a person finds position 9. */
+export function Walk({
+  outline,
+  strings,
+  walked,
+  marked,
+  done,
+  route = [],
+  close = false,
+  width = 680,
+  paint = SCREEN,
+}: Props) {
+  const placed = strings.map((s) => ({
+    name: s.name,
+    lead: walked.has(s.name),
+    slots: s.slots.flatMap((slot) =>
+      slot.roofX === null || slot.roofY === null ? [] : [{ slot, at: { x: slot.roofX, y: slot.roofY } }],
+    ),
+  }));
+  const whole = spanOf([
+    ...outline.map(([x, y]) => ({ x, y })),
+    ...placed.flatMap((s) => s.slots.map((p) => p.at)),
+  ]);
+  if (whole === null) return null;
+  const margin = outline.length > 2 ? 14 : 34;
+  const lead = placed.filter((s) => s.lead);
+  const shown = close ? focusOn(whole, spanOf(lead.flatMap((s) => s.slots.map((p) => p.at)))) : whole;
+  const sheet = sheetOf(shown, width, margin);
+  // a module is about a metre and a sixth wide: marks may not cover their neighbours' numbers
+  const size = Math.max(15, Math.min(24, sheet.scale * 1.1));
+  const font = width < 480 ? 12 : 13;
+  const isMarked = (name: string, slot: DrawnSlot): boolean =>
+    marked ? marked.has(`${name}-${slot.position}`) : walked.has(name) && EXCEPTIONS.has(conditionOf(slot));
+  const marksOf = (s: (typeof placed)[number]): Mark[] =>
+    s.slots
+      .filter((p) => isMarked(s.name, p.slot))
+      .map((p) => ({
+        position: p.slot.position,
+        condition: conditionOf(p.slot),
+        at: sheet.at(p.at),
+        done: done?.has(`${s.name}-${p.slot.position}`) ?? false,
+      }));
+  const words = lead
+    .map((s) => {
+      const marks = marksOf(s);
+      return marks.length
+        ? `${s.name}: ${listed(marks.map((m) => `${m.position} ${CONDITION_WORDS[m.condition]}`))}`
+        : '';
+    })
+    .filter(Boolean)
+    .join('. ');
+  const clip = `walk-${width}-${close ? 'close' : 'whole'}`;
+  return (
+    <svg
+      viewBox={`0 0 ${width} ${sheet.height.toFixed(0)}`}
+      width="100%"
+      role="img"
+      aria-label={`Roof with the path of ${listed(lead.map((s) => s.name))}. ${words}`}
+      style={{ height: 'auto' }}
+    >
+      <clipPath id={clip}>
+        <rect x="0" y="0" width={width} height={sheet.height} />
+      </clipPath>
+      <g clipPath={`url(#${clip})`}>
+        {outline.length > 2 && (
+          <path
+            d={`${lineOf(outline.map(([x, y]) => sheet.at({ x, y })))}Z`}
+            fill={paint.sheet}
+            stroke={paint.ink}
+            strokeWidth="2"
+          />
+        )}
+        {placed
+          .filter((s) => !s.lead)
+          .flatMap((s) =>
+            rowsOf(s.slots.map((p) => sheet.at(p.at))).rows.map((row) => (
+              <path
+                key={`${s.name} ${lineOf(row)}`}
+                d={lineOf(row)}
+                fill="none"
+                stroke={paint.rule}
+                strokeWidth="1.5"
+              />
+            )),
+          )}
+        {lead.map((s) => {
+          const points = s.slots.map((p) => sheet.at(p.at));
+          const path = rowsOf(points);
+          const [first] = points;
+          const last = points.at(-1);
+          return (
+            <g key={s.name}>
+              {path.leads.map(([from, to]) => (
+                <path
+                  key={lineOf([from, to])}
+                  d={lineOf([from, to])}
+                  fill="none"
+                  stroke={paint.ink3}
+                  strokeDasharray="1 3"
+                />
+              ))}
+              {path.rows.map((row) => (
+                <path
+                  key={lineOf(row)}
+                  d={lineOf(row)}
+                  fill="none"
+                  stroke={paint.ink}
+                  strokeWidth="2.5"
+                  strokeLinejoin="round"
+                />
+              ))}
+              {points.map((p, i) => {
+                const t = across(points[i - 1], p, points[i + 1]);
+                return (
+                  <path
+                    key={s.slots[i]?.slot.position}
+                    d={`M${round(p.x - 5 * t.x)} ${round(p.y - 5 * t.y)}l${round(10 * t.x)} ${round(10 * t.y)}`}
+                    stroke={paint.ink}
+                    strokeWidth="1.2"
+                  />
+                );
+              })}
+              {first && (
+                <text x={first.x - 2} y={first.y - 9} fontSize={font} fill={paint.ink} {...TEXT}>
+                  {s.name} −
+                </text>
+              )}
+              {last && points.length > 3 && (
+                <text
+                  x={last.x + 2}
+                  y={last.y - 9}
+                  textAnchor="end"
+                  fontSize={font}
+                  fill={paint.ink}
+                  {...TEXT}
+                >
+                  +
+                </text>
+              )}
+            </g>
+          );
+        })}
+        {route.length > 1 && (
+          <path
+            d={lineOf(route.map((p) => sheet.at(p)))}
+            fill="none"
+            stroke={paint.petrol}
+            strokeWidth="1.5"
+            strokeDasharray="2 4"
+          />
+        )}
+        {placed.flatMap((s) =>
+          marksOf(s).map((mark) => (
+            <MarkBox key={`${s.name}-${mark.position}`} mark={mark} paint={paint} size={size} />
+          )),
+        )}
+      </g>
+      <g transform={`translate(${width - margin - 22} ${margin + 10})`} fill={paint.ink}>
+        <rect x="-5" y="-8" width="26" height="44" fill={paint.sheet} opacity="0.85" />
+        <path d="M0 14 8 -4 16 14 8 9.5Z" />
+        <text x="8" y="29" textAnchor="middle" fontSize="12" fontFamily="inherit">
           N
         </text>
       </g>
-      {[...placed].reverse().map((s) => {
-        const first = s === placed[0];
-        const points = s.slots.map((slot) => ({ slot, ...at(slot) }));
-        const start = points[0];
-        return (
-          <g key={s.name}>
-            <path
-              d={`M${points.map((p) => `${p.x.toFixed(1)} ${p.y.toFixed(1)}`).join('L')}`}
-              fill="none"
-              stroke={first ? paint.ink : paint.slate}
-              strokeWidth={first ? 3 : 2}
-              strokeLinejoin="round"
-            />
-            {points.map((p) => (
-              <path
-                key={p.slot.position}
-                d={`M${p.x} ${p.y - 5}v10`}
-                stroke={first ? paint.ink : paint.slate}
-              />
-            ))}
-            {start && (
-              <text
-                x={start.x - 10}
-                y={start.y + 4}
-                textAnchor="end"
-                fontSize="13"
-                fontWeight="600"
-                fontFamily="inherit"
-                fill={first ? paint.ink : paint.ink2}
-              >
-                {s.name} −
-              </text>
-            )}
-            {points
-              .filter((p) => MARKED.has(conditionOf(p.slot)))
-              .map((p) => {
-                const condition = conditionOf(p.slot);
-                const solid = condition === 'stuck' || condition === 'not_shutting_down';
-                const fill =
-                  condition === 'stuck'
-                    ? paint.rust
-                    : condition === 'not_shutting_down'
-                      ? paint.crimson
-                      : paint.sheet;
-                return (
-                  <g key={p.slot.position}>
-                    <rect
-                      x={p.x - 11}
-                      y={p.y - 11}
-                      width="22"
-                      height="22"
-                      fill={fill}
-                      stroke={solid ? fill : paint.ink}
-                      strokeDasharray={condition === 'unheard' ? '3 3' : undefined}
-                    />
-                    <text
-                      x={p.x}
-                      y={p.y + 5}
-                      textAnchor="middle"
-                      fontSize="13"
-                      fontWeight="700"
-                      fontFamily="inherit"
-                      fill={solid ? paint.sheet : paint.ink}
-                    >
-                      {p.slot.position}
-                    </text>
-                  </g>
-                );
-              })}
-          </g>
-        );
-      })}
     </svg>
   );
 }

@@ -81,7 +81,7 @@ export function byInputOnly(
       strings: here && fell.length === 1 ? [watch.string] : fell.flatMap((i) => i.strings),
       dropped: { afterS: times[k - 1] ?? watch.startedAtS, byS: times[k]! },
       returned: next === undefined ? null : { afterS: times[last]!, byS: next },
-      inputs: inputsAt(inputs, watch, times[last]!, times[k]!),
+      inputs: inputsAt(inputs, watch, times[last]!, times[k]),
     });
   }
   return result('watching');

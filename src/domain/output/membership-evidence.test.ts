@@ -17,11 +17,19 @@ describe('evidence of membership', () => {
     expect(apartFrom(of(0.1), of(0.1))).toBeNull();
   });
   it('a pair that looks exchanged, and none where it is not one to one', () => {
-    const a = { string: 'A', unit: 3, otherString: 'B' };
-    const b = { string: 'B', unit: 1, otherString: 'A' };
-    expect(counterpartOf(a, [a, b])).toBe(b);
-    expect(counterpartOf(a, [a])).toBeNull();
-    expect(counterpartOf(a, [a, b, { ...b, unit: 2 }])).toBeNull();
-    expect(counterpartOf(a, [a, b, { ...a, unit: 4 }])).toBeNull();
+    const typicals = new Map([
+      ['A', of(5, 6, 7)],
+      ['B', of(6, 7, 8)],
+      ['C', of(9, 9, 9)],
+    ]);
+    const a = { string: 'A', current: of(6.02, 7.01, 8), apart: 0.16 };
+    const b = { string: 'B', current: of(5.01, 6, 7.02), apart: 0.14 };
+    expect(counterpartOf(a, [a, b], typicals)).toBe(b);
+    expect(counterpartOf(b, [a, b], typicals)).toBe(a);
+    expect(counterpartOf(a, [a], typicals)).toBeNull();
+    expect(counterpartOf(a, [a, b, { ...b }], typicals)).toBeNull();
+    expect(counterpartOf(a, [a, b, { ...a }], typicals)).toBeNull();
+    const far = { string: 'C', current: of(5, 6, 7), apart: 0.3 };
+    expect(counterpartOf(a, [a, far], typicals)).toBeNull();
   });
 });

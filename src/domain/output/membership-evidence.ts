@@ -29,14 +29,31 @@ export function apartFrom(unit: Float64Array, string: Float64Array, currentMin =
   return shares.length === 0 ? null : { share: median(shares), steps: shares.length };
 }
 
-export interface Judged {
+/** A unit that does not carry its own string's current. */
+export interface Misfit {
   string: string;
-  unit: number;
-  otherString: string | null;
+  current: Float64Array;
+  /** How far it lies from its own string. */
+  apart: number;
 }
-/** The one unit of the other string that looks to belong here; null: none, or more than one. */
-export function counterpartOf<J extends Judged>(suspect: J, elsewhere: readonly J[]): J | null {
-  const there = elsewhere.filter((j) => j.string === suspect.otherString && j.otherString === suspect.string);
-  const alike = elsewhere.filter((j) => j.string === suspect.string && j.otherString === suspect.otherString);
-  return there.length === 1 && alike.length === 1 ? there[0]! : null;
+/** Closer than this share of what parts a unit from its own string is a fit. */
+const FITS = 1 / 3;
+
+/**
+ * The one misfit of another string that may stand in this one's place: each is close to the other's string, and no
+ * other misfit is so too. null: none, or more than one. Other strings may fit as well: this is a hint, not a finding.
+ */
+export function counterpartOf<M extends Misfit>(
+  misfit: M,
+  misfits: readonly M[],
+  typicals: ReadonlyMap<string, Float64Array>,
+): M | null {
+  const partners = (a: M): M[] => misfits.filter((b) => b.string !== a.string && close(a, b) && close(b, a));
+  const close = (a: M, b: M): boolean => {
+    const typical = typicals.get(b.string);
+    const apart = typical && apartFrom(a.current, typical);
+    return apart !== null && apart !== undefined && apart.share <= FITS * a.apart;
+  };
+  const [only, ...more] = partners(misfit);
+  return only && more.length === 0 && partners(only).length === 1 ? only : null;
 }

@@ -1,5 +1,7 @@
 import { useState } from 'react';
-import { Button } from '../../components/ui/Button';
+import type { SlotRef } from '../../components/placements/evidence';
+import { suggestedFor } from '../../components/placements/suggestions';
+import { Button, ButtonLink } from '../../components/ui/Button';
 import { Notice } from '../../components/ui/Notice';
 import { Sheet } from '../../components/ui/Sheet';
 import { Table, type Column } from '../../components/ui/Table';
@@ -7,7 +9,7 @@ import { counted, decibelMilliwatts } from '../../drawings/numbers';
 import { clockOrDate, fullTime } from '../../drawings/times';
 import { paths } from '../../schemas/paths';
 import type { RollCallPage } from '../../schemas/api/roll-call';
-import type { GatewayTally, RollTally, RollUnit } from './tally';
+import type { GatewayTally, RollTally, RollUnit, UnknownUnit } from './tally';
 import { nearWords } from './words';
 
 const SHOWN_AT_FIRST = 30;
@@ -17,10 +19,13 @@ export function MissingSheet({
   tally,
   started,
   siteId,
+  onReplace,
 }: {
   tally: RollTally;
   started: boolean;
   siteId: string;
+  /** Another unit takes the place of one that isn't heard; null: the person may not change the as-built. */
+  onReplace: ((slot: SlotRef) => void) | null;
 }) {
   const [all, setAll] = useState(false);
   if (tally.roster === 0 || (!started && tally.heard === 0)) return null;
@@ -44,8 +49,32 @@ export function MissingSheet({
       cell: (u) => u.roofPlace || 'not recorded',
     },
   ];
+  if (onReplace)
+    columns.push({
+      key: 'replace',
+      label: '',
+      cell: (u) => (
+        <Button
+          className="!px-2.5 !text-sm"
+          aria-label={`Replace ${u.serial} at ${u.stringName}-${u.position}`}
+          onClick={() => onReplace({ stringId: u.stringId, position: u.position })}
+        >
+          Replace
+        </Button>
+      ),
+    });
   return (
-    <Sheet id="missing" title="Still to hear" flush aside={counted(tally.missing.length, 'unit')}>
+    <Sheet
+      id="missing"
+      title="Still to hear"
+      flush
+      aside={
+        <span className="flex flex-wrap items-center gap-x-4 gap-y-1">
+          {counted(tally.missing.length, 'unit')}
+          {tally.missing.length > 0 && <ButtonLink href={paths.walk(siteId)}>Walk to them</ButtonLink>}
+        </span>
+      }
+    >
       <Table
         caption="Units that have not answered"
         columns={columns}
@@ -63,26 +92,50 @@ export function MissingSheet({
 }
 
 /** Serials that answered and stand on no as-built of the site. */
-export function UnknownSheet({ page, tally }: { page: RollCallPage; tally: RollTally }) {
+export function UnknownSheet({
+  page,
+  tally,
+  onPlace,
+}: {
+  page: RollCallPage;
+  tally: RollTally;
+  onPlace: ((stranger: UnknownUnit) => void) | null;
+}) {
   if (tally.unknown.length === 0) return null;
   return (
     <Sheet id="unknown" title="Heard, but not on the as-built">
       <ul>
-        {tally.unknown.map((u) => (
-          <li
-            key={u.answer.serial}
-            className="border-b border-rule-faint py-2.5 first:pt-0 last:border-b-0 last:pb-0"
-          >
-            <p className="font-semibold">{u.answer.serial}</p>
-            <p className="text-sm text-ink-2">
-              {nearWords(u)}
-              {u.answer.signal !== null && `, ${decibelMilliwatts(u.answer.signal)}`}, first at{' '}
-              <time dateTime={u.answer.at} title={fullTime(u.answer.at, page.site.timeZone)}>
-                {clockOrDate(u.answer.at, page.at, page.site.timeZone)}
-              </time>
-            </p>
-          </li>
-        ))}
+        {tally.unknown.map((u) => {
+          const [best] = suggestedFor(u.answer, page.strings, page.answers);
+          const sure = best?.reasons.find((r) => r.kind === 'misread' || r.kind === 'serial_run');
+          return (
+            <li
+              key={u.answer.serial}
+              className="flex items-start justify-between gap-3 border-b border-rule-faint py-2.5 first:pt-0 last:border-b-0 last:pb-0"
+            >
+              <div className="min-w-0">
+                <p className="font-semibold">{u.answer.serial}</p>
+                <p className="text-sm text-ink-2">
+                  {nearWords(u)}
+                  {u.answer.signal !== null && `, ${decibelMilliwatts(u.answer.signal)}`}, first at{' '}
+                  <time dateTime={u.answer.at} title={fullTime(u.answer.at, page.site.timeZone)}>
+                    {clockOrDate(u.answer.at, page.at, page.site.timeZone)}
+                  </time>
+                </p>
+                {best && sure && (
+                  <p className="text-sm text-ink-2">
+                    {best.stringName}: {sure.words}
+                  </p>
+                )}
+              </div>
+              {onPlace && (
+                <Button aria-label={`Place ${u.answer.serial}`} onClick={() => onPlace(u)}>
+                  Place
+                </Button>
+              )}
+            </li>
+          );
+        })}
       </ul>
       <p className="mt-3 text-sm text-ink-2">
         A spare, a neighbour’s unit, or one that sits where the drawing has another: read the label on the

@@ -1,5 +1,8 @@
-import { useCallback, useMemo, useRef } from 'react';
+import { useCallback, useMemo, useRef, useState } from 'react';
 import { useQuery } from '@tanstack/react-query';
+import { PlaceDialog } from '../../components/placements/PlaceDialog';
+import { SwapDialog } from '../../components/placements/SwapDialog';
+import type { SlotRef } from '../../components/placements/evidence';
 import { Caution } from '../../components/ui/Caution';
 import { Heading } from '../../components/ui/Heading';
 import { LiveMark } from '../../components/ui/Live';
@@ -11,11 +14,14 @@ import { queryClient } from '../../lib/query-client';
 import type { Change } from '../../schemas/live';
 import type { ChangeKind } from '../../lib/live';
 import { paths } from '../../schemas/paths';
+import type { Stranger } from '../../domain/commissioning/suggest';
+import type { PlaceBody } from '../../schemas/api/placing';
 import type { RollCallPage, RollCallView } from '../../schemas/api/roll-call';
 import { CurveSheet } from './CurveSheet';
 import { KnownSteps } from './KnownSteps';
 import { GatewaysSheet, MissingSheet, UnknownSheet } from './Lists';
-import { RunPanel } from './RunPanel';
+import { RunPanel, type StartTyped } from './RunPanel';
+import { WiredSheet } from './WiredSheet';
 import { StringsSheet } from './StringsSheet';
 import { patchRollCall, runChanged } from './live';
 import { outlookOf } from './outlook';
@@ -25,11 +31,25 @@ import { rollCallWords } from './words';
 interface Props {
   initial: RollCallPage;
   mayRun: boolean;
+  /** Whether the person may change the as-built. */
+  mayPlace: boolean;
   view: RollCallView;
+  typed: StartTyped | null;
 }
 
+type Open =
+  | { kind: 'place'; stranger: Stranger }
+  | { kind: 'replace'; slot: SlotRef }
+  | { kind: 'swap'; first: SlotRef | null; second: SlotRef | null };
+const DONE: Record<PlaceBody['kind'], string> = {
+  place: 'The unit is placed',
+  replace: 'The unit is replaced; the old one’s life stays in the history',
+  swap: 'The two units are exchanged on the as-built',
+  move: 'The unit is moved on the as-built',
+};
+
 /** The roll call of a site, live. */
-export function RollCall({ initial, mayRun, view }: Props) {
+export function RollCall({ initial, mayRun, mayPlace, view, typed }: Props) {
   const siteId = initial.site.id;
   const key = ['roll-call', siteId];
   const client = queryClient();
@@ -65,6 +85,13 @@ export function RollCall({ initial, mayRun, view }: Props) {
     () => (page.run && !page.run.stoppedAt ? outlookOf(tally, page.run, now) : null),
     [tally, page.run, now],
   );
+  const [dialog, setDialog] = useState<Open | null>(null);
+  const [done, setDone] = useState('');
+  const written = (body: PlaceBody) => {
+    setDialog(null);
+    setDone(DONE[body.kind]);
+    again();
+  };
   const words = rollCallWords(tally, page.run, outlook, page.site.timeZone);
   const waits = page.passesUntilHeard.length > 0 && tally.missing.length > 0;
   return (
@@ -98,21 +125,65 @@ export function RollCall({ initial, mayRun, view }: Props) {
               and do not obey the initiator. Treat every string as live.
             </Caution>
           )}
-          <RunPanel page={page} mayRun={mayRun} roster={tally.roster} onChanged={again} />
+          <RunPanel page={page} mayRun={mayRun} roster={tally.roster} onChanged={again} typed={typed} />
         </div>
         <div className="grid min-w-0 content-start gap-5 lg:col-start-1 lg:row-span-2 lg:row-start-2 xl:col-start-2 xl:row-start-1">
           <CurveSheet page={page} tally={tally} now={now} outlook={outlook} />
           <StringsSheet siteId={siteId} tally={tally} view={view} />
-          <MissingSheet tally={tally} started={page.run !== null} siteId={siteId} />
+          <MissingSheet
+            tally={tally}
+            started={page.run !== null}
+            siteId={siteId}
+            onReplace={mayPlace ? (slot) => setDialog({ kind: 'replace', slot }) : null}
+          />
         </div>
         <div className="grid content-start gap-5 lg:col-start-2 lg:row-start-3 xl:col-start-3 xl:row-start-2">
-          <UnknownSheet page={page} tally={tally} />
+          {done && (
+            <Notice kind="done" title={done}>
+              The loggers get the new roster.{' '}
+              <a href={paths.asBuiltHistory(siteId)} className="text-petrol hover:underline">
+                See the history
+              </a>
+            </Notice>
+          )}
+          <UnknownSheet
+            page={page}
+            tally={tally}
+            onPlace={mayPlace ? ({ answer }) => setDialog({ kind: 'place', stranger: answer }) : null}
+          />
+          {tally.heard > 0 && (
+            <WiredSheet
+              siteId={siteId}
+              onReview={mayPlace ? (first, second) => setDialog({ kind: 'swap', first, second }) : null}
+            />
+          )}
           <GatewaysSheet page={page} tally={tally} />
         </div>
         <div className="lg:col-span-2 lg:row-start-1 xl:col-span-1 xl:col-start-1 xl:row-span-2">
           <KnownSteps page={page} tally={tally} open={open} />
         </div>
       </div>
+      {dialog?.kind === 'swap' && (
+        <SwapDialog
+          siteId={siteId}
+          strings={page.strings}
+          first={dialog.first}
+          second={dialog.second}
+          onClose={() => setDialog(null)}
+          onDone={written}
+        />
+      )}
+      {(dialog?.kind === 'place' || dialog?.kind === 'replace') && (
+        <PlaceDialog
+          siteId={siteId}
+          strings={page.strings}
+          answers={page.answers}
+          stranger={dialog.kind === 'place' ? dialog.stranger : null}
+          slot={dialog.kind === 'replace' ? dialog.slot : null}
+          onClose={() => setDialog(null)}
+          onDone={written}
+        />
+      )}
     </>
   );
 }

@@ -17,6 +17,13 @@ interface Props {
   mayRun: boolean;
   roster: number;
   onChanged: () => void;
+  /** What was typed and what was wrong, where the form came back without a script. */
+  typed: StartTyped | null;
+}
+
+export interface StartTyped {
+  personOnSite: string;
+  fault: string;
 }
 
 function Faults({ error }: { error: Error | null }) {
@@ -31,8 +38,8 @@ function Faults({ error }: { error: Error | null }) {
   );
 }
 
-function Start({ page, onChanged }: Pick<Props, 'page' | 'onChanged'>) {
-  const [personOnSite, setPersonOnSite] = useState('');
+function Start({ page, onChanged, typed }: Pick<Props, 'page' | 'onChanged' | 'typed'>) {
+  const [personOnSite, setPersonOnSite] = useState(typed?.personOnSite ?? '');
   const [onSite, setOnSite] = useState(false);
   const [missing, setMissing] = useState<{ name?: string; onSite?: string }>({});
   const start = useMutation(
@@ -58,8 +65,16 @@ function Start({ page, onChanged }: Pick<Props, 'page' | 'onChanged'>) {
   const nameFault =
     missing.name ?? (start.error instanceof ApiError ? start.error.fault('personOnSite') : undefined);
   return (
-    <form onSubmit={submit} noValidate>
+    <form method="post" onSubmit={submit} noValidate>
+      <input type="hidden" name="action" value="start" />
       <Faults error={start.error} />
+      {typed && !start.error && start.isIdle && (
+        <div className="mb-4">
+          <Notice kind="failed" title="The roll call was not started">
+            {typed.fault}
+          </Notice>
+        </div>
+      )}
       <p className="mb-2">
         <strong className="font-semibold">A unit that is heard begins to follow the command in force.</strong>{' '}
         {commandInForceWords(page.commands)}
@@ -80,6 +95,8 @@ function Start({ page, onChanged }: Pick<Props, 'page' | 'onChanged'>) {
       <label className="mt-3 flex min-h-[44px] items-center gap-3">
         <input
           type="checkbox"
+          name="onSite"
+          value="true"
           checked={onSite}
           onChange={(e) => setOnSite(e.target.checked)}
           aria-describedby={missing.onSite ? 'on-site-fault' : undefined}
@@ -100,7 +117,7 @@ function Start({ page, onChanged }: Pick<Props, 'page' | 'onChanged'>) {
   );
 }
 
-function Running({ page, run, mayRun, onChanged }: Omit<Props, 'roster'> & { run: RollCallRun }) {
+function Running({ page, run, mayRun, onChanged }: Omit<Props, 'roster' | 'typed'> & { run: RollCallRun }) {
   const stop = useMutation(
     {
       mutationFn: () => api<RollCallRun>(paths.api.rollCallStop(page.site.id), { method: 'POST', body: {} }),
@@ -117,9 +134,18 @@ function Running({ page, run, mayRun, onChanged }: Omit<Props, 'roster'> & { run
       </p>
       <p className="mt-2 text-ink-2">{commandInForceWords(page.commands)}</p>
       {mayRun ? (
-        <Button className="mt-4 w-full" onClick={() => stop.mutate()} disabled={stop.isPending}>
-          {stop.isPending ? 'Stopping …' : 'Stop the roll call'}
-        </Button>
+        <form
+          method="post"
+          onSubmit={(event) => {
+            event.preventDefault();
+            stop.mutate();
+          }}
+        >
+          <input type="hidden" name="action" value="stop" />
+          <Button type="submit" className="mt-4 w-full" disabled={stop.isPending}>
+            {stop.isPending ? 'Stopping …' : 'Stop the roll call'}
+          </Button>
+        </form>
       ) : (
         <p className="mt-2 text-ink-2">A manager or a technician stops it.</p>
       )}
@@ -128,7 +154,7 @@ function Running({ page, run, mayRun, onChanged }: Omit<Props, 'roster'> & { run
 }
 
 /** Who runs the roll call; the form that starts one, by a named person on site. */
-export function RunPanel({ page, mayRun, roster, onChanged }: Props) {
+export function RunPanel({ page, mayRun, roster, onChanged, typed }: Props) {
   const { run } = page;
   const open = run && !run.stoppedAt ? run : null;
   if (!open && roster === 0) return null;
@@ -141,7 +167,7 @@ export function RunPanel({ page, mayRun, roster, onChanged }: Props) {
       {open ? (
         <Running page={page} run={open} mayRun={mayRun} onChanged={onChanged} />
       ) : mayRun ? (
-        <Start page={page} onChanged={onChanged} />
+        <Start page={page} onChanged={onChanged} typed={typed} />
       ) : (
         <p>A manager or a technician starts it, with somebody on site.</p>
       )}

@@ -1,0 +1,87 @@
+import { useQuery } from '@tanstack/react-query';
+import { groupsOf, suspectWords } from '../../components/placements/suspects';
+import type { SlotRef } from '../../components/placements/evidence';
+import { Button, ButtonLink } from '../../components/ui/Button';
+import { Sheet } from '../../components/ui/Sheet';
+import { api } from '../../lib/api';
+import { queryClient } from '../../lib/query-client';
+import type { MembershipPage } from '../../schemas/api/membership';
+import { paths } from '../../schemas/paths';
+
+interface Props {
+  siteId: string;
+  onReview: ((first: SlotRef, second: SlotRef | null) => void) | null;
+}
+
+const SHOWN = 3;
+
+/** Units whose current is another string's, in short; the evidence has a page of its own. */
+export function WiredSheet({ siteId, onReview }: Props) {
+  const { data, error } = useQuery(
+    {
+      queryKey: ['membership', siteId, '6'],
+      queryFn: ({ signal }) =>
+        api<MembershipPage>(paths.api.membership(siteId), { query: { hours: 6 }, signal }),
+      staleTime: 60_000,
+      refetchInterval: 180_000,
+    },
+    queryClient(),
+  );
+  const groups = groupsOf((data?.suspects ?? []).filter((s) => s.outcome !== 'fits_none'));
+  const counts = data?.counts;
+  return (
+    <Sheet id="wired" title="Wired differently from the drawing?">
+      {groups.length > 0 ? (
+        <ul className="grid gap-4">
+          {groups.slice(0, SHOWN).map((group) => {
+            const [a, b] = group;
+            return (
+              <li key={a.serial}>
+                <p>{suspectWords(group)}</p>
+                <div className="mt-2.5 flex flex-wrap gap-2">
+                  <ButtonLink href={paths.membership(siteId)}>See the currents</ButtonLink>
+                  {onReview && (
+                    <Button
+                      onClick={() =>
+                        onReview(
+                          { stringId: a.stringId, position: a.position },
+                          b
+                            ? { stringId: b.stringId, position: b.position }
+                            : a.otherStringId
+                              ? { stringId: a.otherStringId, position: 0 }
+                              : null,
+                        )
+                      }
+                    >
+                      Review the move
+                    </Button>
+                  )}
+                </div>
+              </li>
+            );
+          })}
+        </ul>
+      ) : (
+        <>
+          <p className="text-ink-2">
+            {error
+              ? `The currents could not be read: ${error.message}`
+              : !counts
+                ? 'Comparing the units’ currents …'
+                : counts.here > 0
+                  ? `${counts.here} units carry the current of their string; for ${counts.cantTell} it can’t be told.`
+                  : 'It can’t be told yet: the strings’ currents are too small or too alike.'}
+          </p>
+          <div className="mt-2.5 flex flex-wrap gap-2">
+            <ButtonLink href={paths.membership(siteId)}>Compare currents, or isolate a string</ButtonLink>
+            {onReview && (
+              <Button onClick={() => onReview({ stringId: '', position: 0 }, null)}>
+                Exchange two serials
+              </Button>
+            )}
+          </div>
+        </>
+      )}
+    </Sheet>
+  );
+}

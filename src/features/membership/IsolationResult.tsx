@@ -1,0 +1,130 @@
+import { Table, type Column } from '../../components/ui/Table';
+import { Tag, type Tone } from '../../components/ui/Tag';
+import type { SlotRef } from '../../components/placements/evidence';
+import { Button } from '../../components/ui/Button';
+import { amperes, percent } from '../../drawings/numbers';
+import { clockSeconds } from '../../drawings/times';
+import type { IsolationFindingView, IsolationRun } from '../../schemas/api/isolation';
+import { unitName } from '../../components/placements/suspects';
+
+type Unit = IsolationFindingView['units'][number];
+type Input = IsolationFindingView['inputs'][number];
+
+const FATES: Record<Unit['fate'], { words: string; tone: Tone; shape: string }> = {
+  member_dropped: { words: 'Went to zero', tone: 'petrol', shape: '▁' },
+  member_kept: { words: 'Kept its current', tone: 'rust', shape: '▮' },
+  other_dropped: { words: 'Went to zero too', tone: 'rust', shape: '▁' },
+  other_kept: { words: 'Kept its current', tone: 'plain', shape: '▮' },
+  not_told: { words: 'Nothing told', tone: 'outline', shape: '' },
+};
+const ORDER: Unit['fate'][] = ['other_dropped', 'member_kept', 'not_told', 'member_dropped', 'other_kept'];
+
+interface Props {
+  run: IsolationRun;
+  timeZone: string;
+  strings: readonly { id: string; name: string }[];
+  onReview: ((first: SlotRef, second: SlotRef | null) => void) | null;
+}
+
+/** "between 14:02:31 and 14:02:41": reports are apart, so what happened lies between two. */
+export function betweenWords(b: { after: string; by: string }, timeZone: string): string {
+  return `between ${clockSeconds(b.after, timeZone)} and ${clockSeconds(b.by, timeZone)}`;
+}
+
+/** Unit by unit: the string's own, and whoever of the others fell with it; and what the inputs carried. */
+export function IsolationResult({ run, timeZone, strings, onReview }: Props) {
+  const { finding } = run;
+  const rows = finding.units
+    .filter((u) => u.string === run.stringName || u.fate === 'other_dropped')
+    .sort((a, b) => ORDER.indexOf(a.fate) - ORDER.indexOf(b.fate) || a.position - b.position);
+  const others = finding.units.filter((u) => u.fate === 'other_kept').length;
+  const columns: Column<Unit>[] = [
+    {
+      key: 'unit',
+      label: 'Unit',
+      cell: (u) => (
+        <>
+          <span className="font-semibold">{unitName(u)}</span>
+          <span className="block whitespace-nowrap text-sm text-ink-2">{u.serial}</span>
+        </>
+      ),
+    },
+    { key: 'before', label: 'Before', numeric: true, cell: (u) => amperes(u.before) },
+    { key: 'during', label: 'Since', numeric: true, cell: (u) => amperes(u.during) },
+    {
+      key: 'fell',
+      label: 'Fell',
+      from: 'sm',
+      className: 'text-sm text-ink-2',
+      cell: (u) => (u.dropped ? betweenWords(u.dropped, timeZone) : ''),
+    },
+    {
+      key: 'fate',
+      label: '',
+      cell: (u) => (
+        <Tag tone={FATES[u.fate].tone} shape={FATES[u.fate].shape}>
+          {FATES[u.fate].words}
+        </Tag>
+      ),
+    },
+  ];
+  const inputs: Column<Input>[] = [
+    {
+      key: 'name',
+      label: 'Input',
+      cell: (i) => (
+        <>
+          <span className="font-medium">{i.name}</span>
+          <span className="block text-sm text-ink-2">{i.strings.join(', ')}</span>
+        </>
+      ),
+    },
+    { key: 'before', label: 'Before', numeric: true, cell: (i) => amperes(i.before) },
+    { key: 'during', label: 'Since', numeric: true, cell: (i) => amperes(i.during) },
+    { key: 'lost', label: 'Lost beyond the others', numeric: true, cell: (i) => percent(i.lost) },
+  ];
+  const ref = (u: Unit): SlotRef | null => {
+    const string = strings.find((s) => s.name === u.string);
+    return string ? { stringId: string.id, position: u.position } : null;
+  };
+  const kept = finding.units.filter((u) => u.fate === 'member_kept');
+  const joined = finding.units.filter((u) => u.fate === 'other_dropped');
+  const first = kept[0] ?? joined[0];
+  const firstRef = first ? ref(first) : null;
+  const secondRef = kept.length === 1 && joined.length === 1 && joined[0] ? ref(joined[0]) : null;
+  return (
+    <div className="grid gap-4">
+      {(finding.dropped ?? finding.returned) && (
+        <p className="text-sm text-ink-2">
+          {finding.dropped && <>Current went {betweenWords(finding.dropped, timeZone)}</>}
+          {finding.returned && <>, and came back {betweenWords(finding.returned, timeZone)}</>}. Times are
+          those of reports: what happened lies between two of them.
+        </p>
+      )}
+      {rows.length > 0 && (
+        <Table
+          caption={`Units of ${run.stringName} and whoever fell with them`}
+          columns={columns}
+          rows={rows}
+          rowKey={(u) => u.serial}
+        />
+      )}
+      {others > 0 && (
+        <p className="text-sm text-ink-2">
+          {others} units of other strings kept their current, as they should.
+        </p>
+      )}
+      {finding.outcome === 'told' && firstRef && onReview && (
+        <div>
+          <Button onClick={() => onReview(firstRef, secondRef)}>Review the move</Button>
+        </div>
+      )}
+      <details>
+        <summary className="target inline-flex cursor-pointer items-center text-sm text-petrol">
+          What the inputs carried
+        </summary>
+        <Table caption="Inputs" columns={inputs} rows={finding.inputs} rowKey={(i) => i.name} />
+      </details>
+    </div>
+  );
+}

@@ -1,0 +1,155 @@
+import { useQuery } from '@tanstack/react-query';
+import { useState } from 'react';
+import { SwapDialog } from '../../components/placements/SwapDialog';
+import type { SlotRef } from '../../components/placements/evidence';
+import { Button } from '../../components/ui/Button';
+import { LiveHeading } from '../../components/ui/LiveHeading';
+import { Notice } from '../../components/ui/Notice';
+import { Segmented } from '../../components/ui/Segmented';
+import { api } from '../../lib/api';
+import { useLive } from '../../lib/live-hook';
+import { replaced } from '../../lib/patch';
+import { queryClient } from '../../lib/query-client';
+import { useViewInUrl } from '../../lib/view-in-url';
+import type { MembershipPage, MembershipView } from '../../schemas/api/membership';
+import { paths } from '../../schemas/paths';
+import { IsolationSheet, isolationKey } from './IsolationSheet';
+import { SuspectsSheet } from './SuspectsSheet';
+import { membershipWords } from './words';
+
+const DEFAULTS: MembershipView = { hours: '6', unit: '' };
+
+interface Props {
+  initial: MembershipPage;
+  view: MembershipView;
+  /** Whether the person may change the as-built and start a watch. */
+  mayWrite: boolean;
+}
+
+/** Which string's current each unit carries; the decisive way where that can't be told. */
+export function MembershipBoard({ initial, view: asked, mayWrite }: Props) {
+  const client = queryClient();
+  const { id, timeZone } = initial.site;
+  const [view, change] = useViewInUrl<MembershipView>(asked, DEFAULTS);
+  const key = ['membership', id, view.hours];
+  const { data, error, isFetching, refetch } = useQuery(
+    {
+      queryKey: key,
+      queryFn: ({ signal }) =>
+        api<MembershipPage>(paths.api.membership(id), { query: { hours: view.hours }, signal }),
+      initialData: view.hours === asked.hours ? initial : undefined,
+      placeholderData: (old: MembershipPage | undefined) => old,
+      refetchInterval: 120_000,
+    },
+    client,
+  );
+  const page = data ?? initial;
+  const status = useLive(`site:${id}`, (news, how) => {
+    client.setQueryData<MembershipPage>(key, (old) =>
+      old ? { ...old, strings: replaced(old.strings, news.strings, (s) => s.id) } : old,
+    );
+    if (how === 'delta' && (news.events ?? []).some((e) => e.kind === 'roster_changed')) void refetch();
+  });
+  const [review, setReview] = useState<[SlotRef, SlotRef | null] | null>(null);
+  const [string, setString] = useState('');
+  const [done, setDone] = useState('');
+  const words = membershipWords(page);
+  const onReview = (first: SlotRef, second: SlotRef | null) => setReview([first, second]);
+  return (
+    <>
+      <LiveHeading
+        crumbs={[
+          { label: 'Commissioning', href: paths.commissioning() },
+          { label: page.site.name, href: paths.commissioningSite(id) },
+          { label: 'Roll call', href: paths.rollCall(id) },
+        ]}
+        finding={{
+          heading: words.heading,
+          sentence: (
+            <>
+              {words.strong && <strong>{words.strong}</strong>} {words.rest}
+            </>
+          ),
+        }}
+        status={status}
+        timeZone={timeZone}
+      />
+      <div className="mb-4 grid gap-3">
+        {error && (
+          <Notice
+            kind="stale"
+            title="The currents could not be read again"
+            action={<Button onClick={() => void refetch()}>Try again</Button>}
+          >
+            {error.message}
+          </Notice>
+        )}
+        {done && (
+          <Notice kind="done" title={done}>
+            The loggers get the new roster. Reports from before the change no longer count for these units.{' '}
+            <a href={paths.asBuiltHistory(id)} className="text-petrol hover:underline">
+              See the history
+            </a>
+          </Notice>
+        )}
+      </div>
+      <div className="mb-3 flex flex-wrap items-center gap-x-3">
+        <Segmented
+          label="Reports of"
+          options={[
+            { value: '2', label: 'Last 2 hours' },
+            { value: '6', label: '6 hours' },
+            { value: '24', label: '24 hours' },
+          ]}
+          value={view.hours}
+          onChange={(hours) => change({ hours })}
+        />
+        {isFetching && <span className="text-sm text-ink-2">reading …</span>}
+      </div>
+      <div className="grid gap-5 xl:grid-cols-2">
+        <div className="grid min-w-0 content-start gap-5">
+          <SuspectsSheet
+            page={page}
+            mayWrite={mayWrite}
+            onReview={onReview}
+            onIsolate={(stringId) => {
+              setString(stringId);
+              document.getElementById('isolation')?.scrollIntoView();
+            }}
+          />
+        </div>
+        <div className="grid min-w-0 content-start gap-5">
+          <IsolationSheet
+            siteId={id}
+            timeZone={timeZone}
+            initial={initial.isolation}
+            strings={page.strings}
+            mayRun={mayWrite}
+            string={string}
+            onString={setString}
+            onReview={mayWrite ? onReview : null}
+          />
+        </div>
+      </div>
+      {review && (
+        <SwapDialog
+          siteId={id}
+          strings={page.strings}
+          first={review[0]}
+          second={review[1]}
+          onClose={() => setReview(null)}
+          onDone={(body) => {
+            setReview(null);
+            setDone(
+              body.kind === 'swap'
+                ? 'The two units are exchanged on the as-built'
+                : 'The unit is moved on the as-built',
+            );
+            void client.invalidateQueries({ queryKey: ['membership', id] });
+            void client.invalidateQueries({ queryKey: isolationKey(id) });
+          }}
+        />
+      )}
+    </>
+  );
+}

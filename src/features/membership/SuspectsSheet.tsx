@@ -1,0 +1,140 @@
+import { useState } from 'react';
+import { Button } from '../../components/ui/Button';
+import { Notice } from '../../components/ui/Notice';
+import { Sheet } from '../../components/ui/Sheet';
+import { TimeChart } from '../../components/charts/TimeChart';
+import type { SlotRef } from '../../components/placements/evidence';
+import { groupsOf, suspectWords, unitName } from '../../components/placements/suspects';
+import { withQuery } from '../../lib/api';
+import type { MembershipPage, MembershipSuspect } from '../../schemas/api/membership';
+import { paths } from '../../schemas/paths';
+import { suspectModel } from './chart';
+
+interface Props {
+  page: MembershipPage;
+  mayWrite: boolean;
+  onReview: (first: SlotRef, second: SlotRef | null) => void;
+  onIsolate: (stringId: string) => void;
+}
+
+const refOf = (s: { stringId: string; position: number }): SlotRef => ({
+  stringId: s.stringId,
+  position: s.position,
+});
+
+function Suspect({
+  group,
+  page,
+  mayWrite,
+  onReview,
+  onIsolate,
+  first,
+}: Omit<Props, 'page'> & {
+  group: [MembershipSuspect, MembershipSuspect?];
+  page: MembershipPage;
+  first: boolean;
+}) {
+  const [a, b] = group;
+  const [shown, setShown] = useState(first);
+  const elsewhere = a.outcome !== 'fits_none';
+  return (
+    <li className="border-b border-rule-faint py-4 first:pt-0 last:border-b-0 last:pb-0">
+      <p className="max-w-[720px] text-[15px] leading-[22px]">{suspectWords(group)}</p>
+      <div className="mt-2.5 flex flex-wrap gap-2">
+        <Button onClick={() => setShown(!shown)} aria-expanded={shown}>
+          {shown ? 'Hide the currents' : 'See the currents'}
+        </Button>
+        {elsewhere && mayWrite && (
+          <Button
+            onClick={() =>
+              onReview(
+                refOf(a),
+                b ? refOf(b) : a.otherStringId ? { stringId: a.otherStringId, position: 0 } : null,
+              )
+            }
+          >
+            Review the move
+          </Button>
+        )}
+        {elsewhere && mayWrite && (
+          <Button onClick={() => onIsolate(a.stringId)}>Isolate {a.string} to be certain</Button>
+        )}
+      </div>
+      {shown && (
+        <div className="mt-4 grid gap-5">
+          {[a, ...(b ? [b] : [])].map((s) => (
+            <TimeChart
+              key={s.serial}
+              model={suspectModel(s, page.site.timeZone)}
+              height={230}
+              fileName={`current-${unitName(s)}`}
+              controls={<span className="font-medium">{unitName(s)}</span>}
+            />
+          ))}
+        </div>
+      )}
+    </li>
+  );
+}
+
+/** Units whose currents don't fit their string, with the evidence drawn. */
+export function SuspectsSheet(props: Props) {
+  const { page } = props;
+  const { counts, window } = page;
+  const groups = groupsOf(page.suspects);
+  return (
+    <Sheet
+      id="suspects"
+      title="Wired differently from the drawing?"
+      flush
+      aside={
+        <a
+          href={withQuery(paths.api.membershipCsv(page.site.id), { hours: window.hours })}
+          download
+          className="text-petrol hover:underline"
+        >
+          Every unit as CSV
+        </a>
+      }
+    >
+      {groups.length > 0 ? (
+        <ul>
+          {groups.map((group, i) => (
+            <Suspect key={group[0].serial} {...props} group={group} first={i === 0} />
+          ))}
+        </ul>
+      ) : (
+        <Notice
+          kind={counts.here > 0 ? 'done' : 'empty'}
+          title={
+            counts.here > 0
+              ? 'No unit carries another string’s current, as far as it can be told'
+              : 'Nothing can be told from these hours'
+          }
+        >
+          {window.withCurrent} of {window.steps} steps of {window.stepS / 60} min had current.
+        </Notice>
+      )}
+      {page.reasons.length > 0 && (
+        <div className="mt-4 border-t border-rule-faint pt-3">
+          <h3 className="mb-1 text-sm font-medium">Can’t tell for {counts.cantTell} units</h3>
+          <ul className="grid gap-1 text-sm text-ink-2">
+            {page.reasons.map((r) => (
+              <li key={r.why}>
+                {r.units} in {r.strings.length <= 8 ? r.strings.join(', ') : `${r.strings.length} strings`}:{' '}
+                {r.why}
+              </li>
+            ))}
+          </ul>
+        </div>
+      )}
+      <p className="mt-4 text-sm text-ink-2">
+        Units in series carry one current. What counts are differences against the units’ accuracy, not
+        whether currents rise and fall together. It names another string, never a position.{' '}
+        <a href={paths.methods()} className="text-petrol hover:underline">
+          How it is judged
+        </a>
+      </p>
+    </Sheet>
+  );
+}

@@ -1,0 +1,69 @@
+import type { ChartLine, ChartModel } from '../../components/charts/model';
+import type { IsolationCurrents, IsolationRun } from '../../schemas/api/isolation';
+import type { MembershipSuspect } from '../../schemas/api/membership';
+import { unitName } from '../../components/placements/suspects';
+
+/** A unit's current against its own string's and the other's. */
+export function suspectModel(s: MembershipSuspect, timeZone: string): ChartModel {
+  const { at, unit, own, other, otherName } = s.series;
+  const lines: ChartLine[] = [
+    { name: unitName(s), at, values: unit, tone: 'rust' },
+    { name: `${s.string}, its string on the drawing`, at, values: own, tone: 'slate' },
+  ];
+  if (otherName) lines.push({ name: otherName, at, values: other, tone: 'petrol' });
+  return {
+    title: `Current of ${unitName(s)}`,
+    unit: 'A',
+    digits: 2,
+    timeZone,
+    from: at[0] ?? 0,
+    to: at.at(-1) ?? 0,
+    lines,
+    nights: [],
+    marks: [],
+  };
+}
+
+/** The string that is isolated unit by unit, the others by their medians. */
+export function isolationModel(run: IsolationRun, currents: IsolationCurrents, timeZone: string): ChartModel {
+  const { at } = currents;
+  const strangers = new Set(
+    run.finding.units.filter((u) => u.fate === 'other_dropped').map((u) => unitName(u)),
+  );
+  const seconds = (iso: string): number => new Date(iso).getTime() / 1000;
+  const { dropped, returned } = run.finding;
+  return {
+    title: `Currents while ${run.stringName} is isolated`,
+    unit: 'A',
+    digits: 2,
+    timeZone,
+    from: at[0] ?? 0,
+    to: at.at(-1) ?? 0,
+    lines: [
+      ...currents.units.map((u): ChartLine => ({
+        name: u.label,
+        at,
+        values: u.current,
+        tone: strangers.has(u.label) ? 'rust' : 'petrol',
+      })),
+      ...currents.strings
+        .filter((s) => s.name !== run.stringName || currents.units.length === 0)
+        .map((s): ChartLine => ({ name: s.name, at, values: s.current, tone: 'slate', quiet: true })),
+    ],
+    nights: [],
+    marks: [
+      { from: seconds(run.startedAt), to: null, words: 'The watch began', tone: 'slate' },
+      ...(dropped
+        ? [
+            {
+              from: seconds(dropped.after),
+              to: returned ? seconds(returned.by) : seconds(dropped.by),
+              words: returned ? `${run.stringName} without current` : `${run.stringName} fell`,
+              tone: 'petrol' as const,
+            },
+          ]
+        : []),
+    ],
+    fromZero: true,
+  };
+}

@@ -1,0 +1,68 @@
+import type { Actor } from '../../domain/access/permissions';
+import type { PlaceBody, PlaceReply } from '../../schemas/api/placing';
+import type { Tx } from '../db/transaction';
+import { AppError, found } from '../errors';
+import { visibleSite } from '../queries/visible-site';
+import { placeUnits } from './place-units';
+
+/** How many slots each kind changes. */
+const SLOTS: Record<PlaceBody['kind'], number> = { place: 1, replace: 1, swap: 2, move: 2 };
+
+function check(body: PlaceBody): void {
+  const refuse = (field: string, message: string): never => {
+    throw new AppError('invalid', { message, fields: [{ field, message }] });
+  };
+  const { kind, slots } = body;
+  if (slots.length !== SLOTS[kind])
+    refuse('slots', `A ${kind} changes ${SLOTS[kind] === 1 ? 'one slot' : 'two slots'}.`);
+  const [one, two] = slots;
+  if (kind === 'place' && one?.expected !== null)
+    refuse('slots.0.serial', 'There is a unit in this slot. Replace it, or choose an empty slot.');
+  if (kind === 'replace' && (one?.expected === null || one?.serial === null))
+    refuse('slots.0.serial', 'Give the serial of the unit that takes the place of the old one.');
+  if (one && two && one.string === two.string && one.position === two.position)
+    refuse('slots.1.position', 'Choose two different slots.');
+  if (
+    kind === 'swap' &&
+    (one?.serial !== two?.expected || two?.serial !== one?.expected || one?.serial === null)
+  )
+    refuse('slots.1.serial', 'A swap puts each unit into the other’s slot. Read both labels again.');
+  if (kind === 'move' && (one?.serial !== null || two?.serial !== one.expected || two?.expected !== null))
+    refuse('slots.1.serial', 'A move takes a unit from one slot to an empty one.');
+}
+
+/**
+ * Writes what somebody read on the roof: an unknown serial placed, a unit replaced, two swapped, one moved. The old
+ * units' lives stay in the history; what was seen on the module goes with the reason.
+ *
+ * @throws AppError not_found · invalid · conflict (somebody changed the slot meanwhile, or the serial sits elsewhere)
+ */
+export async function placeHeard(
+  tx: Tx,
+  actor: Actor,
+  siteRef: string,
+  body: PlaceBody,
+  at: Date,
+  address: string | null,
+): Promise<PlaceReply> {
+  const site = found(await visibleSite(tx, siteRef), 'site');
+  check(body);
+  const done = await placeUnits(
+    tx,
+    actor,
+    site.id,
+    body.slots.map((s) => ({
+      slot: { string: s.string, position: s.position },
+      serial: s.serial,
+      expected: s.expected,
+    })),
+    {
+      at,
+      reason: `${body.reason.replace(/[.\s]*$/, '.')} Seen on the roof: ${body.seen}`,
+      source: 'roll_call',
+      move: body.kind === 'swap' || body.kind === 'move',
+      address,
+    },
+  );
+  return done;
+}
