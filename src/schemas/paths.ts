@@ -93,6 +93,7 @@ export const paths = {
     asBuilt: (site: string) => `/api/sites/${site}/as-built`,
     asBuiltCsv: (site: string) => `/api/sites/${site}/as-built.csv`,
     asBuiltImport: (site: string) => `/api/sites/${site}/as-built/import`,
+    roof: (site: string) => `/api/sites/${site}/roof`,
     asBuiltParts: (site: string) => `/api/sites/${site}/as-built/parts`,
     asBuiltPart: (site: string, part: string) => `/api/sites/${site}/as-built/parts/${part}`,
     loggerToken: (site: string, logger: string) => `/api/sites/${site}/as-built/loggers/${logger}/token`,

@@ -1,6 +1,7 @@
 import { randomUUID } from 'node:crypto';
 import { get, type Route, type Target } from './route';
 import { DESIGN_AND_EQUIPMENT } from './routes-equipment';
+import { IMPORT_SERIALS_ROOF } from './routes-import';
 import { HANDOVER } from './routes-handover';
 import { PEOPLE_AND_ACCOUNTS } from './routes-people';
 
@@ -9,6 +10,7 @@ export type { Route, Target } from './route';
 /** Every route of the product. A file under src/pages that is not here fails the matrix. */
 export const ROUTES: readonly Route[] = [
   ...DESIGN_AND_EQUIPMENT,
+  ...IMPORT_SERIALS_ROOF,
   ...HANDOVER,
   ...PEOPLE_AND_ACCOUNTS,
   // pages
@@ -38,12 +40,6 @@ export const ROUTES: readonly Route[] = [
     'as_built.read',
     'site',
     (t) => `/commissioning/${t.site}/history`,
-  ),
-  get(
-    'commissioning/[site]/import.astro',
-    'as_built.write',
-    'site',
-    (t) => `/commissioning/${t.site}/import`,
   ),
   get('commissioning/[site]/walk.astro', 'site.read', 'site', (t) => `/commissioning/${t.site}/walk`),
   get(
@@ -205,19 +201,6 @@ export const ROUTES: readonly Route[] = [
     (t) => `/api/strings/${t.string}/units.csv`,
   ),
   get('api/my-site/[site].ts', 'customer_page.read', 'site', (t) => `/api/my-site/${t.site}`),
-  {
-    file: 'api/sites/[site]/as-built/import.ts',
-    method: 'POST',
-    permission: 'as_built.write',
-    of: 'site',
-    path: (t) => `/api/sites/${t.site}/as-built/import`,
-    body: {
-      mode: 'check',
-      table: { columns: ['string', 'position', 'serial'], lines: [2], rows: [['A1', '1', '']] },
-      choices: { decimalMark: null, fillDown: false, meanings: {}, newStrings: null },
-    },
-    served: [200],
-  },
   // install checks, meter readings and photos
   get('commissioning/[site]/checks.astro', 'checks.read', 'site', (t) => `/commissioning/${t.site}/checks`),
   get(
