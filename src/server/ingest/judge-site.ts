@@ -12,7 +12,13 @@ import {
 import { UNCHANGED, type JudgeOutcome } from '../../domain/verdicts/evidence';
 import { judgeFrame, sweepString } from '../../domain/verdicts/judge';
 import type { JudgedFrame } from '../../domain/verdicts/observe';
-import { newMemory, resetSlot, resizeMemory, type StringMemory } from '../../domain/verdicts/memory';
+import {
+  newMemory,
+  NO_STATE,
+  resetSlot,
+  resizeMemory,
+  type StringMemory,
+} from '../../domain/verdicts/memory';
 import { config } from '../config';
 import type { KeptJudgement } from '../queries/judgement';
 import type { JudgedSite, JudgedString } from '../queries/judgement-contexts';
@@ -82,8 +88,12 @@ export class SiteJudge {
     return this.site.reportIntervalS;
   }
 
-  /** The plant or what it was told has changed: new contexts, the memories stay but for exchanged units. */
-  setSite(site: JudgedSite, nowS: number): void {
+  /**
+   * The plant or what it was told has changed: new contexts, the memories stay but for exchanged units. Gives the strings
+   * of which something else is known now: they are to be written down at once.
+   */
+  setSite(site: JudgedSite, nowS: number): JudgedNow[] {
+    const anew: JudgedNow[] = [];
     this.site = site;
     if (nowS > this.lightUntilS - LIGHT_AFTER_S / 2) this.makeLight(nowS - LIGHT_BEFORE_S, nowS);
     const before = new Map(this.strings);
@@ -92,19 +102,16 @@ export class SiteJudge {
       const context = this.contextOf(string);
       const old = before.get(string.id);
       if (!old) {
-        this.strings.set(string.id, {
-          string,
-          context,
-          memory: newMemory(context),
-          evidence: {},
-          dirty: true,
-        });
+        const judged = { string, context, memory: newMemory(context), evidence: {}, dirty: true };
+        this.strings.set(string.id, judged);
+        anew.push(judged);
         continue;
       }
       const judged = { ...old, string, context };
-      this.exchange(judged, old.string.serials);
+      if (this.exchange(judged, old.string.serials)) anew.push(judged);
       this.strings.set(string.id, judged);
     }
+    return anew;
   }
 
   /** Takes the air temperature (°C) in: where it makes or ends the chance of snow the strings are judged anew. */
@@ -158,19 +165,26 @@ export class SiteJudge {
     };
   }
 
-  private exchange(judged: JudgedNow, before: readonly (string | null)[]): void {
+  /** Forgets what was known of units that are others now; false: none is. */
+  private exchange(judged: JudgedNow, before: readonly (string | null)[]): boolean {
+    let exchanged = false;
     if (judged.memory.state.length !== judged.string.serials.length) {
       resizeMemory(judged.memory, judged.context);
       for (const position of Object.keys(judged.evidence))
         if (Number(position) > judged.string.serials.length) delete judged.evidence[Number(position)];
-      judged.dirty = true;
+      exchanged = true;
     }
+    const tells = judged.context.behaviour.kind !== 'shutdown_only';
     judged.string.serials.forEach((serial, slot) => {
-      if (serial === (before[slot] ?? null)) return;
+      // of a type that tells nothing there is no state, of any other there is one: the string's type may have changed
+      const fits = serial === null || (judged.memory.state[slot] !== NO_STATE) === tells;
+      if (fits && serial === (before[slot] ?? null)) return;
       resetSlot(judged.memory, judged.context, slot);
       delete judged.evidence[slot + 1];
-      judged.dirty = true;
+      exchanged = true;
     });
+    judged.dirty ||= exchanged;
+    return exchanged;
   }
 
   private makeLight(fromS: number, nowS: number): void {

@@ -12,6 +12,7 @@ import {
   temperatureAirOf,
 } from '../queries/judgement';
 import { judgedSite } from '../queries/judgement-contexts';
+import { UNCHANGED } from '../../domain/verdicts/evidence';
 import { seenPassing } from '../../domain/verdicts/conductors';
 import type { KnownLogger } from '../queries/ingest-loggers';
 import { CHANNELS, sendNotices } from '../queries/live-notices';
@@ -210,8 +211,13 @@ export class Judgement {
         return;
       }
       const nowS = Math.floor(Date.now() / 1000);
-      judge.setSite(site, nowS);
+      const anew = judge.setSite(site, nowS);
       if (!judge.catchingUp) await this.catchUp(judge, nowS);
+      // a page must not show of a new unit what was known of the one before
+      await this.keep(
+        judge,
+        anew.map((judged) => ({ site: judge, outcome: { judged, outcome: UNCHANGED } })),
+      );
       await this.sweepSite(judge, nowS);
     };
     const entry = waiting ?? { current: Promise.resolve() };
