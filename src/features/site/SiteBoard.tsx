@@ -75,6 +75,17 @@ export function SiteBoard({ initial, events, kind: initialKind }: Props) {
         status={status}
         timeZone={timeZone}
       />
+      <nav aria-label="On the roof" className="no-print -mt-3 mb-5 flex flex-wrap gap-x-5 text-sm">
+        <a className="target inline-flex items-center text-petrol hover:underline" href={paths.walk(id)}>
+          Walk the roof
+        </a>
+        <a
+          className="target inline-flex items-center text-petrol hover:underline"
+          href={paths.membership(id)}
+        >
+          Who is in which string
+        </a>
+      </nav>
       {error && (
         <div className="mb-6">
           <Notice

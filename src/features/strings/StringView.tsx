@@ -1,5 +1,6 @@
 import { QueryClientProvider, useQuery, useQueryClient } from '@tanstack/react-query';
 import { useState } from 'react';
+import { ButtonLink } from '../../components/ui/Button';
 import { Caution } from '../../components/ui/Caution';
 import { Heading } from '../../components/ui/Heading';
 import { LiveMark } from '../../components/ui/Live';
@@ -8,6 +9,7 @@ import { energy } from '../../drawings/numbers';
 import { clock } from '../../drawings/times';
 import { TraceSheet } from '../../components/trace/TraceSheet';
 import { Sheet } from '../../components/ui/Sheet';
+import { withQuery } from '../../lib/api';
 import { useLive } from '../../lib/live-hook';
 import { queryClient } from '../../lib/query-client';
 import type { StringHistory, StringPage } from '../../schemas/api/string';
@@ -120,6 +122,11 @@ function Page({ page: initial, history }: Props) {
                   <li key={step}>{step}</li>
                 ))}
               </ol>
+              <p className="no-print mt-3">
+                <ButtonLink href={withQuery(paths.walk(site.id), { string: string.name })}>
+                  Walk and ladder card
+                </ButtonLink>
+              </p>
             </Sheet>
           )}
           <div className="hidden lg:block">
