@@ -9,8 +9,10 @@ import { aim, figure, middle, type Tally } from './diagnosis/scoring';
 
 /**
  * Judgements against a plant of which the truth is known: the simulator's, run in this process over labelled
- * plant-days. Latitudes from 58° N to 43° S, all seasons, clear to overcast skies, all kinds of unit, 12 to 600 units,
- * lost reports, gaps of twenty minutes, clocks that are off. `--days N`: so many plant-days (360 unless said).
+ * plant-days. Latitudes from 58° N to 43° S, all seasons, clear to overcast skies, snow, all kinds of unit, 12 to 600
+ * units, lost reports, loggers that are cut off (and hand over later what they kept, or don't), clocks that are off,
+ * inverters read some seconds after the units. `--days N`: so many plant-days (720 unless said).
+ * `--seeds held_out` (unless said): plants that the judgements were not developed on; `--seeds developed`: the others.
  *
  * How the plant differs from what the judgements assume:
  * - clear sky by simplified Solis with haze of its own each day (the judgements: Ineichen with one turbidity), clouds
@@ -24,14 +26,15 @@ import { aim, figure, middle, type Tally } from './diagnosis/scoring';
  * reports showed is not scored; one that keeps passing counts from the time limit on. A cause is scored where at least
  * half of the fault's units have its verdict.
  * Output: ten days a run in five-minute reports (quarters are their means), the faults from the first or the fifth day on.
- * What a string loses is what its sound twin gives more under the same sky; 8 % is to be found by the third sunny day
- * (2.5 kWh/m² in the plane), below 3 % a finding is a false alarm, between them either may be said. Few siblings and
+ * What a string loses is what its sound twin gives more under the same sky; 8 % on most days is to be found by the
+ * third sunny day (2.5 kWh/m² in the plane), below 3 % a finding is a false alarm, between them either may be said.
+ * `limit_cases` are losses from 8 to 10 %. Snow that a string keeps for an afternoon is no case. Few siblings and
  * resistance are held against the string's own sound days where there are some. Membership is asked for after one day,
- * whatever its weather; units whose strings the stated accuracy can't part count as undecided, not as missed. On these
- * days a unit's report and its input's are of the same moment, which is kinder to the resistance than a roof is.
+ * whatever its weather; units whose strings the stated accuracy can't part count as undecided, not as missed.
+ * Silent strings that share an input with a held one count as undecided: they have one voltage.
  */
 const flag = process.argv.indexOf('--days');
-const days = flag < 0 ? 360 : Number(process.argv[flag + 1]);
+const days = flag < 0 ? 720 : Number(process.argv[flag + 1]);
 if (!Number.isInteger(days) || days < 1)
   throw new Error('--days takes a whole number of plant-days, at least 1.');
 const setFlag = process.argv.indexOf('--seeds');
@@ -55,6 +58,9 @@ const NO_REASON = 'Run with --verbose to see which.';
 const LATE_BY_A_DAY =
   'Three low days of five are asked for, and on a sunny day of broken cloud the strings differ too much to call one low.';
 
+const WOBBLE =
+  'The tracker wobbles and modules warm while the inverter is read up to 20 s after the units: three days leave some 0.04 Ω of error, and what is not clear is left unsaid or called not to be told.';
+
 const conductDays = Math.max(1, Math.round(days / 3));
 const conduct = newConductScore();
 for (let n = 0; n < conductDays; n++) {
@@ -77,6 +83,8 @@ for (const [name, t, inThree, reports] of [
   say(figure(`${name}.median_reports_to_detect`, middle(reports), 'reports', 1));
 }
 tally('stuck.shutdown_only', conduct.stuckStrings, 'string_days');
+say(figure('stuck.shutdown_only.median_time_to_detect', middle(conduct.stuckStrings.delays), 's', 0));
+say(figure('stuck.shutdown_only.undecided', conduct.stuckStringsUndecided.value, 'share'));
 tally('not_shutting_down.shutdown_only', conduct.notShuttingDownStrings, 'string_days');
 say(figure('cause.right', conduct.cause.value, 'share'));
 say(`diagnosis.cause.faults ${conduct.cause.all} faults`);
@@ -89,14 +97,14 @@ for (const line of aim(
   'stuck.shutdown_only.recall',
   conduct.stuckStrings.recall,
   0.99,
-  'Units that report nothing: one held module in eighteen is within what voltages of strings differ by, and is left unsaid.',
+  'Units that report nothing: without sound strings on the same inverter one held module in eighteen is within what a datasheet foretells.',
 ))
   say(line);
 for (const line of aim(
   'stuck.shutdown_only.precision',
   conduct.stuckStrings.precision,
   0.99,
-  'Units that report nothing: a chimney in low sun takes the voltage of several modules, and the string voltage alone can not part that from held units; the finding names shade as what else it could be.',
+  'Units that report nothing: a chimney whose shadow covers one module after the other for two hours reads like a held unit; the finding names shade as what else it could be.',
 ))
   say(line);
 if (verbose) for (const line of conduct.oddities.slice(0, 60)) say(`# ${line}`);
@@ -118,6 +126,8 @@ say(`diagnosis.output.plant_days ${runs * RUN_DAYS} days`);
 tally('low_output', output.lowOutput, 'string_days');
 say(figure('low_output.median_sunny_days_to_detect', middle(output.lowOutput.delays), 'days', 1));
 tally('low_output.few_siblings', output.lowOutputByModel, 'string_days');
+say(figure('low_output.limit_cases.recall', output.limitCases.value, 'share'));
+say(`diagnosis.low_output.limit_cases.faults ${output.limitCases.all} faults`);
 say(figure('low_output.signature_right', output.signature.value, 'share'));
 say(figure('low_output.undecided', output.cantTell.value, 'share'));
 tally('bypassed_substring', output.bypassed, 'unit_days');
@@ -130,12 +140,15 @@ say(figure('wrong_string.units_undecided', current.unitsUndecided.value, 'share'
 say(figure('wrong_string.median_days_to_detect', middle(current.wrongString.delays), 'days', 1));
 tally('resistance', current.resistance, 'string_days');
 say(figure('resistance.undecided', current.resistanceCantTell.value, 'share'));
+tally('resistance.every_15_minutes', current.resistanceQuarters, 'string_days');
+say(figure('resistance.every_15_minutes.undecided', current.resistanceQuartersCantTell.value, 'share'));
 say(figure('resistance.median_sunny_days_to_detect', middle(current.resistance.delays), 'days', 1));
 const met: [string, number, number, string][] = [
   ['low_output.recall', output.lowOutput.recall, 0.9, LATE_BY_A_DAY],
   ['bypassed_substring.told_from_stuck', output.toldApart.value, 0.95, NO_REASON],
   ['wrong_string.recall', current.wrongString.recall, 0.95, NO_REASON],
-  ['resistance.recall', current.resistance.recall, 0.9, NO_REASON],
+  ['resistance.recall', current.resistance.recall, 0.9, WOBBLE],
+  ['resistance.every_15_minutes.recall', current.resistanceQuarters.recall, 0.9, WOBBLE],
 ];
 for (const [name, value, least, why] of met) for (const line of aim(name, value, least, why)) say(line);
 if (output.lowOutput.falsePerThousand >= 1)

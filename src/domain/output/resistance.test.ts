@@ -80,6 +80,34 @@ describe('the loop of a string', () => {
     expect(fitted(samples).ohm).toBeLessThan(0.75);
   });
 
+  it("leaves out what was read at different moments, as the input's own current shows", () => {
+    const random = generator(9);
+    // a cloud's edge passes between both readings of every third sample: the tracker's voltage is another one by then
+    const torn = days(random, 3, 0.5).map((s, i) => {
+      const edge = i % 3 === 0 ? 0.5 + random() : 1;
+      return { ...s, inputV: s.inputV - 30 * (edge - 1), inputA: s.ownA * edge * 1.006 };
+    });
+    expect(fitted(torn).samples).toBeLessThanOrEqual((2 / 3) * torn.length);
+    expect(Math.abs(fitted(torn).ohm - 0.5)).toBeLessThan(0.08);
+    // one report in three is enough then, for no neighbour need be steady
+    expect(Math.abs(fitted(torn.filter((_, i) => i % 4 === 1)).ohm - 0.5)).toBeLessThan(0.15);
+  });
+
+  it('takes what all strings show alike for the weather', () => {
+    const fit = { ohm: 0.6, low: 0.55, high: 0.65, sharedOhm: null, gain: 0, samples: 90, highestA: 9 };
+    const past = { ...fit, ohm: 0.4, low: 0.35, high: 0.45 };
+    const against = { past, siblingsOhm: [], cableOhm: 0.4 };
+    expect(judgeLoop(fit, against).outcome).toBe('growing');
+    const all = [0.18, 0.2, 0.21, 0.19, 0.22];
+    expect(judgeLoop(fit, { ...against, siblingsGrowthOhm: all }).outcome).toBe('usual');
+  });
+
+  it("says that it can't tell rather than that nothing is wrong", () => {
+    const fit = { ohm: 0.55, low: 0.4, high: 0.7, sharedOhm: null, gain: 0, samples: 40, highestA: 9 };
+    const past = { ...fit, ohm: 0.45, low: 0.35, high: 0.55 };
+    expect(judgeLoop(fit, { past, siblingsOhm: [], cableOhm: 0.4 })).toMatchObject({ outcome: 'cant_tell' });
+  });
+
   it('keeps what strings share apart from its own where their currents differ', () => {
     const fit = fitted(days(generator(15), 3, 0.3, { others: 2, shared: 0.15 }));
     expect(fit.sharedOhm).not.toBeNull();

@@ -1,9 +1,9 @@
 import { judgeMembership } from '../../../src/domain/output/membership';
 import { fitLoop, judgeLoop, type LoopSample } from '../../../src/domain/output/resistance';
-import type { OutputRun } from './output-scenarios';
-import { STEP_S, sumAt, typicalAt, type Reports } from './output-series';
+import { STEP_S, STEPS_A_DAY as A_DAY, type OutputRun } from './output-scenarios';
+import { sumAt, typicalAt, type Reports } from './output-series';
 import { sunnyDays } from './output-scores';
-import { DAY_S, unitTypeOf } from './plants';
+import { unitTypeOf } from './plants';
 import { Share, Tally } from './scoring';
 
 /** Wrong strings and added resistance: what currents and voltages of a day or three tell. */
@@ -14,8 +14,11 @@ export interface CurrentScore {
   undecided: Share;
   /** Of all units, those that are left open. */
   unitsUndecided: Share;
+  /** From reports every five minutes, and from one in three of them. */
   resistance: Tally;
   resistanceCantTell: Share;
+  resistanceQuarters: Tally;
+  resistanceQuartersCantTell: Share;
   remarks: string[];
 }
 
@@ -25,10 +28,11 @@ export const newCurrentScore = (): CurrentScore => ({
   unitsUndecided: new Share(),
   resistance: new Tally(),
   resistanceCantTell: new Share(),
+  resistanceQuarters: new Tally(),
+  resistanceQuartersCantTell: new Share(),
   remarks: [],
 });
 
-const A_DAY = DAY_S / STEP_S;
 /** Days of a run on which membership is asked for: whatever the weather. */
 const MEMBERSHIP_DAYS = [0, 1];
 
@@ -79,8 +83,15 @@ export function scoreMembership(run: OutputRun, reports: Reports, score: Current
   }
 }
 
-/** Samples of string `k` on days `from` to `to` (inclusive). */
-function samplesOf(run: OutputRun, reports: Reports, k: number, from: number, to: number): LoopSample[] {
+/** Samples of string `k` on days `from` to `to` (inclusive), every `every` steps. */
+function samplesOf(
+  run: OutputRun,
+  reports: Reports,
+  k: number,
+  from: number,
+  to: number,
+  every: number,
+): LoopSample[] {
   const { plan, fromS } = run.drawn;
   const own = plan.strings[k]!;
   const r = reports.strings[k]!;
@@ -88,47 +99,64 @@ function samplesOf(run: OutputRun, reports: Reports, k: number, from: number, to
     (_, j) => j !== k && plan.strings[j]!.inverter === own.inverter && plan.strings[j]!.input === own.input,
   );
   const samples: LoopSample[] = [];
-  for (let q = from * A_DAY; q < (to + 1) * A_DAY; q++) {
+  for (let q = from * A_DAY; q < (to + 1) * A_DAY; q += every) {
     if (r.excluded[q] !== 0) continue;
     const sumV = sumAt(r.voltageOut, q);
     const ownA = typicalAt(r.current, q);
     const othersA = others.reduce((sum, o) => sum + typicalAt(o.current, q), 0);
     const inputV = r.inputV[q]!;
     if (Number.isNaN(sumV + ownA + othersA + inputV)) continue;
-    samples.push({ atS: fromS + q * STEP_S, sumV, inputV, ownA, othersA });
+    samples.push({ atS: fromS + q * STEP_S, sumV, inputV, ownA, othersA, inputA: r.inputA[q]! });
   }
   return samples;
 }
 
 /** The fit at the end of the third sunny day with the fault, against the string's own past or its siblings. */
 export function scoreResistance(run: OutputRun, reports: Reports, score: CurrentScore, n: number): void {
+  if (unitTypeOf(run.drawn.plan).kind === 'shutdown_only') return;
+  fitAndScore(run, reports, 1, score.resistance, score.resistanceCantTell, score.remarks, n);
+  fitAndScore(run, reports, 3, score.resistanceQuarters, score.resistanceQuartersCantTell, score.remarks, n);
+}
+
+function fitAndScore(
+  run: OutputRun,
+  reports: Reports,
+  every: number,
+  tally: Tally,
+  cantTell: Share,
+  remarks: string[],
+  n: number,
+): void {
   const { plan } = run.drawn;
-  if (unitTypeOf(plan).kind === 'shutdown_only') return;
   const sunny = sunnyDays(run, reports);
   const last = sunny[2];
   if (last === undefined) return;
   const from = Math.max(run.onsetDay, sunny[0]!);
   const pasts = plan.strings.map((_, k) =>
-    run.onsetDay < 2 ? 'no past' : fitLoop(samplesOf(run, reports, k, 0, run.onsetDay - 1)),
+    run.onsetDay < 2 ? 'no past' : fitLoop(samplesOf(run, reports, k, 0, run.onsetDay - 1, every)),
   );
-  const fits = plan.strings.map((_, k) => fitLoop(samplesOf(run, reports, k, from, last)));
+  const fits = plan.strings.map((_, k) => fitLoop(samplesOf(run, reports, k, from, last, every)));
   plan.strings.forEach((s, k) => {
     const past = pasts[k]!;
     const finding = judgeLoop(fits[k]!, {
       past: typeof past === 'string' ? null : past,
       siblingsOhm: fits.flatMap((f, j) => (j === k || typeof f === 'string' ? [] : [f.ohm])),
+      siblingsGrowthOhm: fits.flatMap((f, j) => {
+        const before = pasts[j]!;
+        return j === k || typeof f === 'string' || typeof before === 'string' ? [] : [f.ohm - before.ohm];
+      }),
       cableOhm: s.cableResistance + 0.002 * (s.slots.length + 1),
     });
     const bad = run.ofString.get(s.name)?.kind === 'connector';
     const said = finding.outcome === 'excess' || finding.outcome === 'growing';
-    score.resistance.lookedAt += 3;
-    score.resistanceCantTell.count(finding.outcome === 'cant_tell');
-    if (bad && said) score.resistance.hit(3);
-    else if (bad) score.resistance.missed++;
-    else if (said) score.resistance.falseAlarms++;
+    tally.lookedAt += 3;
+    cantTell.count(finding.outcome === 'cant_tell');
+    if (bad && said) tally.hit(3);
+    else if (bad) tally.missed++;
+    else if (said) tally.falseAlarms++;
     if (bad !== said)
-      score.remarks.push(
-        `run ${n} ${s.name} ${plan.strings[0]!.unitType}: ${bad ? 'missed' : 'false'}: ${finding.outcome}, ${finding.words}${run.ofString.get(s.name) && !bad ? ` (${run.ofString.get(s.name)!.kind})` : ''}`,
+      remarks.push(
+        `run ${n} ${s.name} ${plan.strings[0]!.unitType}, every ${5 * every} min: ${bad ? 'missed' : 'false'}: ${finding.outcome}, ${finding.above?.ohm.toFixed(3)} from ${finding.above?.low.toFixed(3)}, ${finding.words}${run.ofString.get(s.name) && !bad ? ` (${run.ofString.get(s.name)!.kind})` : ''}`,
       );
   });
 }

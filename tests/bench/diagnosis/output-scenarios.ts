@@ -24,6 +24,10 @@ export interface OutputRun {
   /** Of the same, by string. */
   ofString: Map<string, OutputFault>;
   swaps: Extract<Fault, { kind: 'wrong_string' }>[];
+  /** Snow on the whole roof, and what of it stays on single strings for the rest of the day. */
+  snow: TimedFault[];
+  /** Steps in which nothing comes through; `keeps`: the logger hands them over afterwards. */
+  cutOff: { fromStep: number; toStep: number; keeps: boolean } | null;
   /** Share of frames lost. */
   lost: number;
   /** Seconds by which the inverter's readings are older than the units'. */
@@ -31,6 +35,9 @@ export interface OutputRun {
 }
 
 export const RUN_DAYS = 10;
+/** Reports come every five minutes. */
+export const STEP_S = 300;
+export const STEPS_A_DAY = DAY_S / STEP_S;
 const SIZES = [3, 4, 6, 6, 7, 8, 9, 10, 12, 30];
 const TYPES = [OUTPUT_SIDE, BOTH_SIDES, HOLDING, OPTIMIZING, OUTPUT_SIDE, SHUTDOWN_ONLY];
 const KINDS = [
@@ -41,14 +48,18 @@ const KINDS = [
   'shade',
   'connector',
   'bypass_diode',
+  'limit',
+  'stuck',
 ] as const;
+/** Losses next to the one that is to be found. */
+const LIMIT_CASE = { least: 0.085, most: 0.105 } as const;
 
 /** Draws run `n`: ten days of one site. */
 export function outputRun(n: number): OutputRun {
   const draw = new Draw(3_000_000 + n);
   const strings = SIZES[n % SIZES.length]!;
   const unitType = TYPES[n % TYPES.length]!;
-  const mayShare = unitType !== OPTIMIZING && unitType !== SHUTDOWN_ONLY;
+  const mayShare = unitType !== SHUTDOWN_ONLY;
   const drawn = drawPlant(
     {
       n: 10_000 + n,
@@ -78,8 +89,8 @@ export function outputRun(n: number): OutputRun {
       const kind = KINDS[(3 * n + k) % KINDS.length]!;
       const position = draw.whole(1, s.slots.length);
       const fault: OutputFault =
-        kind === 'soiling'
-          ? { kind, string: s.name, share: 0.09 + 0.2 * draw.next() }
+        kind === 'soiling' || kind === 'limit'
+          ? { kind: 'soiling', string: s.name, share: soiledShare(draw, kind) }
           : kind === 'shade'
             ? shadeOf(draw, s.name, s.slots.length)
             : kind === 'connector'
@@ -107,9 +118,12 @@ export function outputRun(n: number): OutputRun {
       faults.push({ fault: swap, fromS: fromS - DAY_S, toS: null });
     }
   }
+  const snow = n % 7 === 3 ? snowOf(draw, plan, fromS) : [];
   return {
     drawn,
     days: RUN_DAYS,
+    snow,
+    cutOff: cutOffOf(draw),
     onsetDay,
     faults,
     ofString,
@@ -117,6 +131,37 @@ export function outputRun(n: number): OutputRun {
     lost: draw.oneOf([0, 0.01, 0.03]),
     inverterLagS: draw.oneOf([0, 5, 10, 20]),
   };
+}
+
+const soiledShare = (draw: Draw, kind: 'soiling' | 'limit'): number =>
+  kind === 'limit'
+    ? LIMIT_CASE.least + (LIMIT_CASE.most - LIMIT_CASE.least) * draw.next()
+    : 0.09 + 0.2 * draw.next();
+
+/** Two snowfalls; when the roof is free again, a third of the strings still is not until the evening. */
+function snowOf(draw: Draw, plan: DrawnPlant['plan'], fromS: number): TimedFault[] {
+  return [2, 6].flatMap((day) => {
+    const dayS = fromS + day * DAY_S;
+    const freeS = dayS + Math.round((9 + 4 * draw.next()) * 3600);
+    const patches = draw.some(plan.strings, Math.floor(plan.strings.length / 3));
+    return [
+      { fault: { kind: 'snow' as const }, fromS: dayS - DAY_S / 4, toS: freeS },
+      ...patches.map((s) => ({
+        fault: { kind: 'soiling' as const, string: s.name, share: 0.85 },
+        fromS: freeS,
+        toS: dayS + DAY_S,
+      })),
+    ];
+  });
+}
+
+/** On two runs in five: from an hour to a day and a half. */
+function cutOffOf(draw: Draw): OutputRun['cutOff'] {
+  const happens = draw.next() < 0.4;
+  const keeps = draw.next() < 0.6;
+  const fromStep = draw.whole(STEPS_A_DAY, (RUN_DAYS - 2) * STEPS_A_DAY);
+  const toStep = fromStep + draw.whole(STEPS_A_DAY / 24, 1.5 * STEPS_A_DAY);
+  return happens ? { fromStep, toStep, keeps } : null;
 }
 
 /** Something new beside the roof: a few hours a day, over some modules in a row. */

@@ -18,6 +18,8 @@ export interface OutputScore {
   lowOutput: Tally;
   /** Strings with too few siblings to compare: judged by the model. */
   lowOutputByModel: Tally;
+  /** Of both, losses just above the one that is to be found. */
+  limitCases: Share;
   signature: Share;
   cantTell: Share;
   bypassed: Tally;
@@ -28,6 +30,7 @@ export interface OutputScore {
 export const newOutputScore = (): OutputScore => ({
   lowOutput: new Tally(),
   lowOutputByModel: new Tally(),
+  limitCases: new Share(),
   signature: new Share(),
   cantTell: new Share(),
   bypassed: new Tally(),
@@ -38,6 +41,7 @@ export const newOutputScore = (): OutputScore => ({
 /** A loss of this share is to be found; below the second a finding is a false alarm; between them either may be said. */
 export const LOSS_TO_FIND = 0.08;
 const LOSS_OF_NONE = 0.03;
+const LIMIT_CASE_BELOW = 0.1;
 /** kWh/m² in the plane that make a sunny day. */
 export const SUNNY = 2.5;
 const SUNNY_DAYS = 3;
@@ -61,7 +65,7 @@ export function scoreLowOutput(run: OutputRun, reports: Reports, score: OutputSc
   const references = new Map<number, PlaneReference>();
   const planes = new Map<number, PlaneSeries>();
   for (let d = 2; d < run.days; d++) {
-    const until = planeUntil(plane, d);
+    const until = planeUntil(plane, d, run.cutOff);
     references.set(d, planeReference(until));
     planes.set(d, until);
   }
@@ -70,7 +74,8 @@ export function scoreLowOutput(run: OutputRun, reports: Reports, score: OutputSc
     const r = reports.strings[k]!;
     const lossOn = (days: readonly number[]): number =>
       1 - days.reduce((sum, d) => sum + r.gaveWh[d]!, 0) / days.reduce((sum, d) => sum + r.twinWh[d]!, 0);
-    const loss = sunny.length < SUNNY_DAYS ? NaN : lossOn(sunny);
+    // what lasts: snow that a string keeps for an afternoon is nobody's case
+    const loss = sunny.length < SUNNY_DAYS ? NaN : median(sunny.map((d) => lossOn([d])));
     const tally =
       references.get(run.days - 1)!.method === 'siblings' ? score.lowOutput : score.lowOutputByModel;
     let found = NaN;
@@ -83,10 +88,10 @@ export function scoreLowOutput(run: OutputRun, reports: Reports, score: OutputSc
       score.cantTell.count(finding.outcome === 'cant_tell');
       if (finding.outcome !== 'cant_tell') tally.lookedAt++;
       const low = finding.outcome === 'low';
-      const worst = Math.max(
-        ...Array.from({ length: d + 1 }, (_, x) => (r.twinWh[x]! > 0 ? 1 - r.gaveWh[x]! / r.twinWh[x]! : 0)),
+      const truly = median(
+        finding.days.map(({ day }) => (r.twinWh[day]! > 0 ? 1 - r.gaveWh[day]! / r.twinWh[day]! : 0)),
       );
-      if (low && !saidBefore && worst < LOSS_OF_NONE) {
+      if (low && !saidBefore && truly < LOSS_OF_NONE) {
         tally.falseAlarms++;
         saidFalse = true;
         score.remarks.push(
@@ -108,6 +113,7 @@ export function scoreLowOutput(run: OutputRun, reports: Reports, score: OutputSc
       saidBefore = low;
     }
     if (!(loss >= LOSS_TO_FIND)) return;
+    if (loss < LIMIT_CASE_BELOW) score.limitCases.count(found <= SUNNY_DAYS);
     if (found <= SUNNY_DAYS) tally.hit(found);
     else {
       tally.missed++;
@@ -121,7 +127,7 @@ export function scoreLowOutput(run: OutputRun, reports: Reports, score: OutputSc
 /** What each string made of the model's output while all was well: its own past. */
 function baselines(run: OutputRun, plane: PlaneSeries): (number | null)[] {
   if (run.onsetDay < 2) return plane.strings.map(() => null);
-  const past = planeReference(planeUntil(plane, run.onsetDay - 1));
+  const past = planeReference(planeUntil(plane, run.onsetDay - 1, run.cutOff));
   return past.ratio.map((r) => {
     const known = [...r].filter((x) => !Number.isNaN(x));
     return known.length < 2 ? null : median(known);

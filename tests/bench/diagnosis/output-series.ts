@@ -2,13 +2,11 @@ import { solarPositionQuick } from '../../../src/domain/photovoltaics/sun/positi
 import { EXCLUDED, type PlaneSeries, type StringSeries } from '../../../src/domain/output/plane-reference';
 import { frameOf, inputRows, inverterRows, radioOf, weatherRows } from '../../../simulator/logger/readings';
 import type { SitePlant } from '../../../simulator/plant/site-plant';
-import { build, DAY_S, Draw, moduleTypeOf, unitTypeOf } from './plants';
-import type { OutputRun } from './output-scenarios';
+import { build, Draw, moduleTypeOf, unitTypeOf } from './plants';
+import { STEP_S, STEPS_A_DAY, type OutputRun } from './output-scenarios';
 
 /** Several days of a plant as its logger reports them, every five minutes, and what a sound twin of it would give. */
 
-export const STEP_S = 300;
-const STEPS_A_DAY = DAY_S / STEP_S;
 const IN_A_QUARTER = 3;
 
 export interface StringReports {
@@ -67,11 +65,15 @@ export function reportsOf(run: OutputRun, n: number): Reports {
     dayOf: new Int16Array(steps).fill(-1),
     insolation: new Float64Array(run.days),
   };
-  const plant = build(run.drawn, run.faults, fromS);
+  const plant = build(run.drawn, [...run.faults, ...run.snow], fromS);
   const bare = { ...run.drawn, plan: { ...plan, obstacles: [] } };
-  const twin = build(bare, [], fromS);
+  const twin = build(
+    bare,
+    run.snow.filter((f) => f.fault.kind === 'snow'),
+    fromS,
+  );
   const draw = new Draw(4_000_000 + n);
-  const gapStep = draw.next() < 0.4 ? draw.whole(STEPS_A_DAY, steps) : -1;
+  const { cutOff } = run;
   plant.step(fromS);
   twin.step(fromS);
   for (let q = 1; q < steps; q++) {
@@ -90,8 +92,7 @@ export function reportsOf(run: OutputRun, n: number): Reports {
     reports.sunAzimuth[q] = solarPositionQuick(atS * 1000, plan).azimuth;
     reports.insolation[day]! += ((plant.poaGlobal.get('Roof') ?? 0) * STEP_S) / 3.6e6;
     compare(plant, twin, reports, day);
-    // an hour in which the logger says nothing
-    if (q >= gapStep && q < gapStep + 12) continue;
+    if (cutOff && !cutOff.keeps && q >= cutOff.fromStep && q < cutOff.toStep) continue;
     note(plant, run, draw, reports, q, inverterLagS > 0 ? inputs : null);
   }
   return reports;
@@ -230,21 +231,27 @@ export function planeOf(run: OutputRun, reports: Reports): PlaneSeries {
   };
 }
 
-/** The plane as it was known at the end of day `day`. */
-export function planeUntil(plane: PlaneSeries, day: number): PlaneSeries {
+/** The plane as it was known at the end of day `day`: what a logger that is cut off keeps is not there yet. */
+export function planeUntil(plane: PlaneSeries, day: number, cutOff: OutputRun['cutOff']): PlaneSeries {
   const end = (day + 1) * 96;
+  const missing =
+    cutOff?.keeps === true && cutOff.toStep > (day + 1) * STEPS_A_DAY
+      ? Math.floor(cutOff.fromStep / IN_A_QUARTER)
+      : end;
+  const known = (column: Float64Array): Float64Array =>
+    missing >= end ? column.subarray(0, end) : column.slice(0, end).fill(NaN, missing);
   return {
     ...plane,
     days: day + 1,
     dayOf: plane.dayOf.subarray(0, end),
-    poaGlobal: plane.poaGlobal.subarray(0, end),
-    temperatureCell: plane.temperatureCell.subarray(0, end),
+    poaGlobal: known(plane.poaGlobal),
+    temperatureCell: known(plane.temperatureCell),
     sunAzimuth: plane.sunAzimuth.subarray(0, end),
     strings: plane.strings.map((s) => ({
       ...s,
-      power: s.power.subarray(0, end),
-      voltage: s.voltage.subarray(0, end),
-      current: s.current.subarray(0, end),
+      power: known(s.power),
+      voltage: known(s.voltage),
+      current: known(s.current),
       excluded: s.excluded.subarray(0, end),
     })),
   };
