@@ -14,6 +14,8 @@ const write = (
 /** Routes of people, invitations and one's own account. */
 export const PEOPLE_AND_ACCOUNTS: readonly Route[] = [
   get('people.astro', 'people.manage', 'nothing', () => '/people'),
+  get('audit.astro', 'audit.read', 'nothing', () => '/audit'),
+  get('api/audit.csv.ts', 'audit.read', 'nothing', () => '/api/audit.csv'),
   get('account.astro', 'own_account.use', 'nothing', () => '/account'),
   get('invitation/[token].astro', 'public', 'nothing', () => `/invitation/${NO_TOKEN}`, [404]),
   get('forgot-password.astro', 'public', 'nothing', () => '/forgot-password'),

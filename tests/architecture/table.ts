@@ -26,6 +26,7 @@ export const FEATURES = [
   'membership',
   'handover',
   'account',
+  'audit',
   'checks',
   'letters',
   'capture',

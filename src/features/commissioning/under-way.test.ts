@@ -77,7 +77,9 @@ describe('the list of sites under way', () => {
 describe('the heading of a site', () => {
   it('counts what blocks', () => {
     expect(siteHeading(site('A'))).toMatchObject({ finding: '1 of 3 steps are done' });
-    expect(siteHeading(site('A')).sentence).toContain('2 points block the handover');
+    expect(siteHeading(site('A')).sentence.replaceAll('\u00a0', ' ')).toContain(
+      '2 points block the handover',
+    );
   });
   it('says when nothing blocks, and when it is done', () => {
     const ready = site('A', { steps: [step('as_built', 'done'), step('handover', 'not_started')] });

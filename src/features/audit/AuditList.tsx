@@ -1,0 +1,111 @@
+import { ButtonLink } from '../../components/ui/Button';
+import { Notice } from '../../components/ui/Notice';
+import { Sheet } from '../../components/ui/Sheet';
+import { SiteTime } from '../../components/ui/Time';
+import { withQuery } from '../../lib/api';
+import { AUDIT_AREAS, type AuditItem, type AuditPage, type AuditView } from '../../schemas/api/audit';
+import { paths } from '../../schemas/paths';
+import { actionWords, AREA_WORDS, changesOf } from './words';
+
+const CONTROL = 'target rounded border border-rule bg-sheet px-2.5 text-[15px] text-ink';
+
+function Entry({ item, at, timeZone }: { item: AuditItem; at: string; timeZone: string }) {
+  const changes = changesOf(item);
+  return (
+    <li className="grid gap-x-6 gap-y-1 py-3 lg:grid-cols-[170px_minmax(0,1fr)_minmax(0,1.2fr)]">
+      <p className="text-sm text-ink-2">
+        <SiteTime at={item.at} now={at} timeZone={timeZone} zone />
+        {item.address && <span className="block">from {item.address}</span>}
+      </p>
+      <div className="min-w-0">
+        <p>
+          <span className="font-medium">{item.person ?? 'Wakeline'}</span> {actionWords(item.action)}
+        </p>
+        <p className="break-words text-sm text-ink-2">
+          {item.site && (
+            <a href={paths.site(item.site.id)} className="text-petrol hover:underline">
+              {item.site.name}
+            </a>
+          )}
+          {item.site && ' · '}
+          {item.subject}
+        </p>
+        {item.reason && <p className="mt-1 break-words">{item.reason}</p>}
+      </div>
+      {changes.length > 0 && (
+        <dl className="min-w-0 text-sm">
+          {changes.map((c) => (
+            <div key={c.field} className="flex flex-wrap gap-x-2">
+              <dt className="text-ink-2">{c.field}</dt>
+              <dd className="min-w-0 break-all">
+                {c.before !== null && (
+                  <>
+                    <del className="text-ink-2">{c.before}</del>{' '}
+                  </>
+                )}
+                {c.after !== null && <ins className="no-underline">{c.after}</ins>}
+              </dd>
+            </div>
+          ))}
+        </dl>
+      )}
+    </li>
+  );
+}
+
+/** Who did what, newest first; a plain form filters it by the address. */
+export function AuditList({ page, view, timeZone }: { page: AuditPage; view: AuditView; timeZone: string }) {
+  const filters = { q: view.q, area: view.area === 'all' ? '' : view.area };
+  return (
+    <>
+      <form action={paths.audit()} className="no-print mb-4 flex flex-wrap items-center gap-x-3 gap-y-2">
+        <input
+          type="search"
+          name="q"
+          defaultValue={view.q}
+          aria-label="Find a person, site, serial or reason"
+          placeholder="Person, site, serial or reason"
+          className={`${CONTROL} w-full placeholder:text-ink-3 sm:w-[280px]`}
+        />
+        <label className="flex items-center gap-2 text-sm text-ink-2">
+          About
+          <select name="area" defaultValue={view.area} className={CONTROL}>
+            <option value="all">everything</option>
+            {AUDIT_AREAS.map((area) => (
+              <option key={area} value={area}>
+                {AREA_WORDS[area]}
+              </option>
+            ))}
+          </select>
+        </label>
+        <button type="submit" className={`${CONTROL} px-4 font-medium`}>
+          Find
+        </button>
+        <ButtonLink href={withQuery(paths.api.auditCsv(), filters)} className="sm:ml-auto">
+          CSV
+        </ButtonLink>
+      </form>
+      {page.items.length === 0 ? (
+        <Notice
+          kind="empty"
+          title={view.q || view.area !== 'all' ? 'Nothing fits' : 'Nothing is on record yet'}
+        >
+          {view.q || view.area !== 'all' ? 'Use fewer words, or look at everything.' : ''}
+        </Notice>
+      ) : (
+        <Sheet id="entries" title="On record">
+          <ul className="divide-y divide-rule-faint">
+            {page.items.map((item) => (
+              <Entry key={item.id} item={item} at={page.at} timeZone={timeZone} />
+            ))}
+          </ul>
+          {page.next !== null && (
+            <ButtonLink href={withQuery(paths.audit(), { ...filters, before: page.next })} className="mt-3">
+              Older
+            </ButtonLink>
+          )}
+        </Sheet>
+      )}
+    </>
+  );
+}

@@ -1,0 +1,72 @@
+import type { AUDIT_AREAS, AuditItem } from '../../schemas/api/audit';
+
+export const AREA_WORDS: Record<(typeof AUDIT_AREAS)[number], string> = {
+  people: 'people',
+  account: 'own accounts',
+  as_built: 'as-built',
+  equipment: 'equipment',
+  checks: 'install checks',
+  commissioning: 'commissioning',
+  roll_call: 'roll call',
+  shutdown_test: 'shutdown tests',
+  handover: 'handover',
+  hazard: 'hazards',
+};
+
+const ACTIONS: Record<string, string> = {
+  'people.invited': 'invited somebody',
+  'people.invitation_ended': 'ended an invitation',
+  'people.joined': 'accepted an invitation',
+  'people.changed': 'changed a person',
+  'people.deactivated': 'deactivated a person',
+  'people.reactivated': 'let a person in again',
+  'account.password_changed': 'changed their password',
+  'account.password_reset': 'set a new password by letter',
+  'account.email_asked': 'asked for a new address',
+  'account.email_changed': 'changed their address',
+  'account.sessions_ended': 'signed other devices out',
+  'account.second_factor_begun': 'put a second factor in force',
+  'account.second_factor_ended': 'ended their second factor',
+  'hazard.acknowledge': 'acknowledged a hazard',
+  'roll_call.start': 'started a roll call',
+  'roll_call.stop': 'stopped a roll call',
+  'checks.sign_off': 'signed the install checks of a string',
+  'commissioning.gap_accepted': 'accepted a gap as it is',
+  'handover.made': 'made a handover pack',
+  'shutdown_test.sign': 'signed a shutdown test',
+};
+
+/** What was done, in words; what has none yet says its own name plainly. */
+export const actionWords = (action: string): string =>
+  ACTIONS[action] ?? action.replaceAll('.', ': ').replaceAll('_', ' ');
+
+const said = (value: unknown): string =>
+  value === null || value === undefined
+    ? 'nothing'
+    : typeof value === 'string'
+      ? value
+      : typeof value === 'object'
+        ? JSON.stringify(value)
+        : String(value as number | boolean);
+
+const fieldsOf = (value: unknown): Record<string, unknown> =>
+  typeof value === 'object' && value !== null && !Array.isArray(value)
+    ? (value as Record<string, unknown>)
+    : value === null || value === undefined
+      ? {}
+      : { value };
+
+/** What changed, field by field: only what differs where there is a before and an after. */
+export function changesOf({ before, after }: Pick<AuditItem, 'before' | 'after'>): {
+  field: string;
+  before: string | null;
+  after: string | null;
+}[] {
+  const old = fieldsOf(before);
+  const now = fieldsOf(after);
+  return [...new Set([...Object.keys(old), ...Object.keys(now)])].flatMap((field) => {
+    const was = field in old ? said(old[field]) : null;
+    const is = field in now ? said(now[field]) : null;
+    return was === is ? [] : [{ field: field.replaceAll('_', ' '), before: was, after: is }];
+  });
+}
