@@ -27,6 +27,22 @@ const ACTIONS: Record<string, string> = {
   'account.sessions_ended': 'signed other devices out',
   'account.second_factor_begun': 'put a second factor in force',
   'account.second_factor_ended': 'ended their second factor',
+  'as_built.site_added': 'began a site',
+  'as_built.site_changed': 'changed a site',
+  'as_built.string_added': 'added a string',
+  'as_built.string_changed': 'changed a string',
+  'as_built.slots_changed': 'changed slots',
+  'as_built.token_made': 'made a logger token',
+  'as_built.unit_placed': 'placed a unit',
+  'as_built.unit_moved': 'moved a unit',
+  'as_built.unit_replaced': 'replaced a unit',
+  'as_built.unit_removed': 'removed a unit',
+  'equipment.create': 'added a type of equipment',
+  'equipment.change': 'changed a type of equipment',
+  'connector_pair.record': 'recorded a connector pair',
+  'connector_pair.end': 'ended a connector pair',
+  'isolation.start': 'began to watch an isolated string',
+  'isolation.stop': 'ended the watch of an isolated string',
   'hazard.acknowledge': 'acknowledged a hazard',
   'roll_call.start': 'started a roll call',
   'roll_call.stop': 'stopped a roll call',
@@ -47,7 +63,7 @@ const said = (value: unknown): string =>
       ? value
       : typeof value === 'object'
         ? JSON.stringify(value)
-        : String(value as number | boolean);
+        : String(value);
 
 const fieldsOf = (value: unknown): Record<string, unknown> =>
   typeof value === 'object' && value !== null && !Array.isArray(value)
@@ -67,6 +83,6 @@ export function changesOf({ before, after }: Pick<AuditItem, 'before' | 'after'>
   return [...new Set([...Object.keys(old), ...Object.keys(now)])].flatMap((field) => {
     const was = field in old ? said(old[field]) : null;
     const is = field in now ? said(now[field]) : null;
-    return was === is ? [] : [{ field: field.replaceAll('_', ' '), before: was, after: is }];
+    return was === is ? [] : [{ field: field.replace(/([a-z])([A-Z])/g, '$1 $2').replaceAll('_', ' ').toLowerCase(), before: was, after: is }];
   });
 }
