@@ -83,6 +83,17 @@ export function changesOf({ before, after }: Pick<AuditItem, 'before' | 'after'>
   return [...new Set([...Object.keys(old), ...Object.keys(now)])].flatMap((field) => {
     const was = field in old ? said(old[field]) : null;
     const is = field in now ? said(now[field]) : null;
-    return was === is ? [] : [{ field: field.replace(/([a-z])([A-Z])/g, '$1 $2').replaceAll('_', ' ').toLowerCase(), before: was, after: is }];
+    return was === is
+      ? []
+      : [
+          {
+            field: field
+              .replace(/([a-z])([A-Z])/g, '$1 $2')
+              .replaceAll('_', ' ')
+              .toLowerCase(),
+            before: was,
+            after: is,
+          },
+        ];
   });
 }
