@@ -11,6 +11,8 @@ export interface SimulatorOptions {
   ingestUrl: string;
   /** From which the loggers' tokens are made; the seed's. */
   secret: string;
+  /** Tokens by logger serial, for loggers that were given theirs in Wakeline. */
+  tokens?: Readonly<Record<string, string>>;
   /** Port of the plant's own page on 127.0.0.1; 0 takes a free one, absent: no page. */
   port?: number;
   /** Epoch seconds at which the plant's time starts; the clock's own where absent. */
@@ -60,6 +62,7 @@ export class Simulator {
               fromS: this.originS,
               url: options.ingestUrl,
               secret: options.secret,
+              tokens: options.tokens ?? {},
               pace: options.pace ?? 1,
               clock: () => this.clock(),
               kept,

@@ -26,6 +26,7 @@ export class SiteRun {
       fromS: number;
       url: string;
       secret: string;
+      tokens?: Readonly<Record<string, string>>;
       pace: number;
       clock: () => number;
       kept: KeptState | null;
@@ -40,7 +41,7 @@ export class SiteRun {
       (l) =>
         new Logger(l, this.plant, {
           url: options.url,
-          token: loggerToken(options.secret, l.serial),
+          token: options.tokens?.[l.serial] ?? loggerToken(options.secret, l.serial),
           clock: options.clock,
           pace: options.pace,
         }),
