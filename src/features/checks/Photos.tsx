@@ -87,6 +87,8 @@ interface AddProps {
   subject: AttachmentQuery['subject'];
   subjectRef: string;
   label: string;
+  /** What the camera wrote about place and time stays in the picture. */
+  keepPlace: boolean;
   onStored: () => Promise<unknown>;
 }
 interface Sending {
@@ -97,9 +99,8 @@ interface Sending {
 }
 
 /** Adds photos, several at once, each with its own progress; one that breaks off is sent again as the same. */
-export function AddPhotos({ site, string, subject, subjectRef, label, onStored }: AddProps) {
+export function AddPhotos({ site, string, subject, subjectRef, label, keepPlace, onStored }: AddProps) {
   const [sending, setSending] = useState<readonly Sending[]>([]);
-  const [keepPlace, setKeepPlace] = useState(false);
   const patch = (ref: string, some: Partial<Sending>) =>
     setSending((all) => all.map((s) => (s.ref === ref ? { ...s, ...some } : s)));
 
@@ -129,8 +130,8 @@ export function AddPhotos({ site, string, subject, subjectRef, label, onStored }
     }
   };
   return (
-    <div className="mt-2">
-      <div className="flex flex-wrap items-center gap-x-4">
+    <div>
+      <div>
         <label className="target inline-flex cursor-pointer items-center rounded border border-rule px-3 text-[15px] focus-within:outline focus-within:outline-2 focus-within:outline-petrol hover:border-ink-3">
           {label}
           <input
@@ -150,15 +151,6 @@ export function AddPhotos({ site, string, subject, subjectRef, label, onStored }
               for (const one of added) void send(one);
             }}
           />
-        </label>
-        <label className="inline-flex min-h-[44px] items-center gap-2 text-sm text-ink-2">
-          <input
-            type="checkbox"
-            className="h-5 w-5 accent-[var(--petrol)]"
-            checked={keepPlace}
-            onChange={(event) => setKeepPlace(event.target.checked)}
-          />
-          Keep the place that the camera wrote
         </label>
       </div>
       {sending.length > 0 && (

@@ -29,6 +29,7 @@ export function StringChecks(props: Props) {
   const { page, row, mayWrite, signing, onClose } = props;
   const { string, state, status } = row;
   const { timeZone } = page.sheet.site;
+  const [keepPlace, setKeepPlace] = useState(false);
   const missing = state.blocks.filter((b) => b.kind === 'missing').length;
   return (
     <Sheet
@@ -85,94 +86,116 @@ export function StringChecks(props: Props) {
           </ul>
         </details>
       )}
+      {mayWrite && (
+        <label className="mb-1 inline-flex min-h-[44px] items-center gap-2 text-sm text-ink-2">
+          <input
+            type="checkbox"
+            className="h-5 w-5 accent-[var(--petrol)]"
+            checked={keepPlace}
+            onChange={(event) => setKeepPlace(event.target.checked)}
+          />
+          Photos keep the place that the camera wrote
+        </label>
+      )}
       <ol className="divide-y divide-rule-faint border-t border-rule-faint">
         {row.cells.map((cell) => (
-          <CheckItem key={cell.check.key} cell={cell} {...props} />
+          <CheckItem key={cell.check.key} cell={cell} keepPlace={keepPlace} {...props} />
         ))}
       </ol>
     </Sheet>
   );
 }
 
-function CheckItem({ page, row, cell, mayWrite, mayRecordEvidence, onChanged }: Props & { cell: Cell }) {
+function CheckItem({
+  page,
+  row,
+  cell,
+  keepPlace,
+  mayWrite,
+  mayRecordEvidence,
+  onChanged,
+}: Props & { cell: Cell; keepPlace: boolean }) {
   const [editing, setEditing] = useState(false);
   const { check, record, judged, mark, photos } = cell;
   const { site } = page.sheet;
   const figures = figureText(cell, row.context.connectors);
   const pair = record && judged?.fireRisk ? undocumentedPair(record.figures, row.context) : null;
   return (
-    <li id={`check-${check.key}`} className="flex gap-3 py-3">
-      <CellMark mark={mark} />
-      <div className="min-w-0 flex-1">
-        <div className="flex flex-wrap items-baseline justify-between gap-x-4">
-          <h3 className="font-semibold">
-            {check.name}
-            <span className="font-normal text-ink-2">: {MARK_WORDS[mark]}</span>
-          </h3>
-          {record && (
-            <p className="text-sm text-ink-2">
-              {record.person}, <SiteTime at={record.at} now={page.sheet.at} timeZone={site.timeZone} />
+    <li id={`check-${check.key}`} className="flex scroll-mt-24 flex-col gap-x-4 gap-y-2 py-3 lg:flex-row">
+      <div className="flex min-w-0 flex-1 gap-3">
+        <CellMark mark={mark} />
+        <div className="min-w-0 flex-1">
+          <div className="flex flex-wrap items-baseline gap-x-4">
+            <h3 className="font-semibold">
+              {check.name}
+              <span className="font-normal text-ink-2">: {MARK_WORDS[mark]}</span>
+            </h3>
+            {record && (
+              <p className="text-sm text-ink-2">
+                {record.person}, <SiteTime at={record.at} now={page.sheet.at} timeZone={site.timeZone} />
+              </p>
+            )}
+          </div>
+          <p className="text-ink-2">{check.asks}</p>
+          {(figures || record?.reason || record?.note) && (
+            <p className="mt-0.5">{[figures, record?.reason, record?.note].filter(Boolean).join('. ')}</p>
+          )}
+          {check.warning && !record && <Notice kind="stale" title={check.warning} />}
+          {judged && judged.words.length > 0 && (
+            <p className={`mt-1 ${judged.weight === 'blocks' ? 'text-rust-ink' : 'text-ink-2'}`}>
+              {judged.words.join(' ')} {judged.remedy} <span className="text-sm">({judged.source})</span>
             </p>
           )}
-        </div>
-        <p className="text-ink-2">{check.asks}</p>
-        {(figures || record?.reason || record?.note) && (
-          <p className="mt-0.5">{[figures, record?.reason, record?.note].filter(Boolean).join('. ')}</p>
-        )}
-        {check.warning && !record && <Notice kind="stale" title={check.warning} />}
-        {judged && judged.words.length > 0 && (
-          <p className={`mt-1 ${judged.weight === 'blocks' ? 'text-rust-ink' : 'text-ink-2'}`}>
-            {judged.words.join(' ')} {judged.remedy} <span className="text-sm">({judged.source})</span>
-          </p>
-        )}
-        <Photos
-          photos={photos}
-          of={`${row.string.name}, ${check.name.toLowerCase()}`}
-          now={page.sheet.at}
-          timeZone={site.timeZone}
-        />
-        {pair && mayRecordEvidence && <Evidence pair={pair} onRecorded={onChanged} />}
-        {pair && !mayRecordEvidence && (
-          <p className="mt-1 text-sm text-ink-2">
-            A manager can record the document that allows this pair, if there is one.
-          </p>
-        )}
-        {editing ? (
-          <>
-            <p className="mt-2 text-sm text-ink-2">
-              {check.how} <span>({check.source})</span>
+          <Photos
+            photos={photos}
+            of={`${row.string.name}, ${check.name.toLowerCase()}`}
+            now={page.sheet.at}
+            timeZone={site.timeZone}
+          />
+          {pair && mayRecordEvidence && <Evidence pair={pair} onRecorded={onChanged} />}
+          {pair && !mayRecordEvidence && (
+            <p className="mt-1 text-sm text-ink-2">
+              A manager can record the document that allows this pair, if there is one.
             </p>
-            <RecordForm
-              sheet={page.sheet}
-              row={row}
-              cell={cell}
-              onCancel={() => setEditing(false)}
-              onSaved={async () => {
-                await onChanged();
-                setEditing(false);
-              }}
-            />
-          </>
-        ) : (
-          mayWrite && (
-            <div className="mt-1 flex flex-wrap items-start gap-x-4">
-              <Button className="mt-2" onClick={() => setEditing(true)}>
-                {record ? 'Record again' : 'Record'}
-              </Button>
-              {record && (
-                <AddPhotos
-                  site={site.id}
-                  string={row.string.id}
-                  subject="install_check"
-                  subjectRef={record.ref}
-                  label="Add photos"
-                  onStored={onChanged}
-                />
-              )}
-            </div>
-          )
-        )}
+          )}
+          {editing && (
+            <>
+              <p className="mt-2 text-sm text-ink-2">
+                {check.how} <span>({check.source})</span>
+              </p>
+              <RecordForm
+                sheet={page.sheet}
+                row={row}
+                cell={cell}
+                onCancel={() => setEditing(false)}
+                onSaved={async () => {
+                  await onChanged();
+                  setEditing(false);
+                }}
+              />
+            </>
+          )}
+        </div>
       </div>
+      {mayWrite && !editing && (
+        <div className="flex flex-none flex-wrap items-start gap-2 pl-[34px] lg:pl-0">
+          <Button onClick={() => setEditing(true)}>
+            {record ? 'Record again' : 'Record'}
+            <span className="sr-only">: {check.name}</span>
+          </Button>
+          {record && (
+            <AddPhotos
+              site={site.id}
+              string={row.string.id}
+              subject="install_check"
+              subjectRef={record.ref}
+              label="Add photos"
+              keepPlace={keepPlace}
+              onStored={onChanged}
+            />
+          )}
+        </div>
+      )}
     </li>
   );
 }

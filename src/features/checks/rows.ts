@@ -1,9 +1,4 @@
-import type {
-  CheckContext,
-  CheckJudgement,
-  CheckKey,
-  StringCheck,
-} from '../../domain/commissioning/checks/definition';
+import type { CheckContext, CheckJudgement, StringCheck } from '../../domain/commissioning/checks/definition';
 import { checkContext, standingOf } from '../../domain/commissioning/checks/context';
 import { judgeCheck } from '../../domain/commissioning/checks/judge';
 import { checksFor } from '../../domain/commissioning/checks/list';
@@ -46,9 +41,6 @@ function markOf(record: CheckRecordHere | null, judged: CheckJudgement | null): 
 
 export function rowsOf(page: ChecksPage): StringRow[] {
   const { sheet } = page;
-  const photos = new Map<string, AttachmentItem[]>();
-  for (const file of page.files)
-    if (file.subjectRef) photos.set(file.subjectRef, [...(photos.get(file.subjectRef) ?? []), file]);
   return sheet.strings.map((string) => {
     const context = checkContext(sheet, string.id);
     const state = signOffState(string.checks.map(standingOf), context);
@@ -60,14 +52,7 @@ export function rowsOf(page: ChecksPage): StringRow[] {
         record,
         judged,
         mark: markOf(record, judged),
-        // a photo stays with the check, also when a newer record has taken the place of the one that it was taken for
-        photos: record
-          ? page.files.filter(
-              (f) =>
-                f.subjectRef === record.ref ||
-                (record.supersedes !== null && f.subjectRef === record.supersedes),
-            )
-          : [],
+        photos: page.files.filter((f) => f.stringId === string.id && f.check === check.key),
       };
     });
     const amiss = state.blocks.filter((b) => b.kind !== 'missing');
@@ -139,6 +124,3 @@ export function figureText(
     })
     .join(', ');
 }
-
-export const checkNameOf = (row: StringRow, key: CheckKey): string =>
-  row.cells.find((c) => c.check.key === key)?.check.name ?? key;

@@ -33,7 +33,7 @@ export function checksHeading(rows: readonly StringRow[]): string {
       ? 'The only string is signed off'
       : `All ${counted(rows.length, 'string')} are signed off`;
   if (signed === 0) return `None of ${counted(rows.length, 'string')} is signed off`;
-  return `${signed} of ${counted(rows.length, 'string')} are signed off`;
+  return `${signed} of ${counted(rows.length, 'string')} ${signed === 1 ? 'is' : 'are'} signed off`;
 }
 
 /** What follows: fire risks first, then what is amiss, then what can be signed. */

@@ -36,6 +36,8 @@ export const attachmentItem = z.object({
   ref: id,
   subject: z.string(),
   subjectRef: id.nullable(),
+  /** Of an install check: which one; also when a newer record has taken the place of that one. */
+  check: z.string().nullable(),
   stringId: id.nullable(),
   name: z.string(),
   mediaType: z.string(),

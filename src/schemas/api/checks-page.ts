@@ -27,7 +27,8 @@ export const readingsView = z.object({
   find: z.string().max(80).catch(''),
   string: z.string().max(40).catch(''),
   show: z.enum(['all', 'odd', 'unread']).catch('all'),
-  stage: z.enum(['all', 'before_energising', 'after_keep_alive', 'after_roll_call']).catch('all'),
+  /** `now`: the stage that is under way. */
+  stage: z.enum(['now', 'all', 'before_energising', 'after_keep_alive', 'after_roll_call']).catch('now'),
   sort: z.enum(['name', 'outcome', 'at']).catch('name'),
   order: z.enum(['up', 'down']).catch('up'),
 });

@@ -11,11 +11,12 @@ interface Row extends Omit<AttachmentItem, 'at' | 'recordedAt'> {
 }
 export type KeptAttachment = AttachmentItem & Pick<Row, 'siteId' | 'personId' | 'sha256'>;
 
-const SELECT = `select a.ref, a.subject, a.subject_ref as "subjectRef", st.ref as "stringId", a.name,
+const SELECT = `select a.ref, a.subject, a.subject_ref as "subjectRef", k.check_name as "check", st.ref as "stringId", a.name,
     a.media_type as "mediaType", a.byte_size as "byteSize", a.width, a.height, a.note, a.place_kept as "placeKept",
     coalesce(p.name, '') as person, a.at, a.recorded_at as "recordedAt", a.site_id as "siteId",
     a.person_id as "personId", a.sha256
-  from attachment a left join string st on st.id = a.string_id left join person p on p.id = a.person_id`;
+  from attachment a left join string st on st.id = a.string_id left join person p on p.id = a.person_id
+  left join install_check k on a.subject = 'install_check' and k.ref = a.subject_ref`;
 /** The organisation's wall, and the site's where the file belongs to one. */
 const VISIBLE = `a.organisation_id = (select actor_organisation())
   and (a.site_id is null or exists (select from site where site.id = a.site_id and ${SITE_VISIBLE}))`;

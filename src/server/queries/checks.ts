@@ -37,15 +37,6 @@ export async function latestChecks(tx: Tx, siteId: number, stringId?: number): P
   return rows.map(kept);
 }
 
-/** Every record of one check of a string, newest first. */
-export async function checkHistory(tx: Tx, stringId: number, check: string): Promise<KeptCheck[]> {
-  const { rows } = await tx.raw<{ rows: Row[] }>(
-    `${SELECT} where k.string_id = :stringId and k.check_name = :check order by k.id desc`,
-    { stringId, check },
-  );
-  return rows.map(kept);
-}
-
 /** A record by its identifier, if the actor may see it. */
 export async function checkByRef(tx: Tx, ref: string): Promise<KeptCheck | undefined> {
   const { rows } = await tx.raw<{ rows: Row[] }>(`${SELECT} where k.ref = :ref`, { ref });

@@ -246,6 +246,7 @@ function asked(
         ? { ...plain, how: `${test.words} ${check.how}`, warning: test.warning, source: test.source }
         : {
             ...plain,
+            asks: 'No test voltage is put on this string: the maker of its units allows none.',
             how: test.words,
             warning: test.warning,
             offersNotApplicable: test.reason,
