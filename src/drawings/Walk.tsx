@@ -34,6 +34,8 @@ const EXCEPTIONS: ReadonlySet<Condition> = new Set([
   'empty',
 ]);
 const TEXT = { fontFamily: 'inherit', fontWeight: 600 } as const;
+/** Room at the left for the names of strings, drawing units. */
+const NAMES = 46;
 const round = (n: number): string => n.toFixed(1);
 const lineOf = (points: readonly Point[]): string =>
   `M${points.map((p) => `${round(p.x)} ${round(p.y)}`).join('L')}`;
@@ -119,9 +121,9 @@ export function Walk({
   const margin = outline.length > 2 ? 14 : 34;
   const lead = placed.filter((s) => s.lead);
   const shown = close ? focusOn(whole, spanOf(lead.flatMap((s) => s.slots.map((p) => p.at)))) : whole;
-  const sheet = sheetOf(shown, width, margin);
+  const sheet = sheetOf(shown, width, margin, NAMES);
   // a module is about a metre and a sixth wide: marks may not cover their neighbours' numbers
-  const size = Math.max(15, Math.min(24, sheet.scale * 1.1));
+  const size = Math.max(19, Math.min(24, sheet.scale * 1.1));
   const font = width < 480 ? 12 : 13;
   const isMarked = (name: string, slot: DrawnSlot): boolean =>
     marked ? marked.has(`${name}-${slot.position}`) : walked.has(name) && EXCEPTIONS.has(conditionOf(slot));
@@ -134,6 +136,10 @@ export function Walk({
         at: sheet.at(p.at),
         done: done?.has(`${s.name}-${p.slot.position}`) ?? false,
       }));
+  // nothing of a walked string lies just left of it: its name stands there
+  const drawnAt = lead.flatMap((s) => s.slots.map((p) => sheet.at(p.at)));
+  const free = (p: Point): boolean =>
+    !drawnAt.some((q) => Math.abs(q.y - p.y) < 8 && q.x < p.x - 1 && q.x > p.x - NAMES);
   const words = lead
     .map((s) => {
       const marks = marksOf(s);
@@ -215,7 +221,14 @@ export function Walk({
                 );
               })}
               {first && (
-                <text x={first.x - 2} y={first.y - 9} fontSize={font} fill={paint.ink} {...TEXT}>
+                <text
+                  x={free(first) ? first.x - 7 : first.x - 2}
+                  y={free(first) ? first.y + 4 : first.y - 9}
+                  textAnchor={free(first) ? 'end' : 'start'}
+                  fontSize={font}
+                  fill={paint.ink}
+                  {...TEXT}
+                >
                   {s.name} −
                 </text>
               )}

@@ -47,14 +47,14 @@ export interface Sheet {
   at: (p: Point) => Point;
 }
 
-/** A drawing as wide as given, with a margin all round. */
-export function sheetOf(span: Span, width: number, margin: number): Sheet {
-  const scale = (width - 2 * margin) / Math.max(1, span.east - span.west);
+/** A drawing as wide as given, with a margin all round; `left`: a wider one there, for names. */
+export function sheetOf(span: Span, width: number, margin: number, left = margin): Sheet {
+  const scale = (width - left - margin) / Math.max(1, span.east - span.west);
   return {
     width,
     height: (span.north - span.south) * scale + 2 * margin,
     scale,
-    at: (p) => ({ x: margin + (p.x - span.west) * scale, y: margin + (span.north - p.y) * scale }),
+    at: (p) => ({ x: left + (p.x - span.west) * scale, y: margin + (span.north - p.y) * scale }),
   };
 }
 

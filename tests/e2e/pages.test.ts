@@ -105,6 +105,24 @@ const PAGES: readonly Shown[] = [
     file: 'sites/[site]/strings/[string].astro',
   },
   {
+    name: 'the walk over a roof',
+    role: 'technician',
+    path: () => `/commissioning/${refOf(SCHOOL)}/walk`,
+    file: 'commissioning/[site]/walk.astro',
+  },
+  {
+    name: 'a ladder card',
+    role: 'technician',
+    path: () => `/commissioning/${refOf(SCHOOL)}/walk?view=card`,
+    file: 'commissioning/[site]/walk.astro',
+  },
+  {
+    name: 'who is in which string',
+    role: 'technician',
+    path: () => `/commissioning/${refOf(HALL)}/membership`,
+    file: 'commissioning/[site]/membership.astro',
+  },
+  {
     name: 'commissioning',
     role: 'technician',
     path: () => '/commissioning',

@@ -82,7 +82,7 @@ export function Confirm({ value, onChange, faults, check, submit, pending, error
       />
       <Area
         label="Why"
-        hint="It stays in the history of both slots."
+        hint="It stays in the history."
         value={value.reason}
         onChange={(reason) => onChange({ ...value, reason })}
         error={faults.reason}

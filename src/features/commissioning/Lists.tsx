@@ -52,7 +52,7 @@ export function MissingSheet({
   if (onReplace)
     columns.push({
       key: 'replace',
-      label: '',
+      label: 'Another unit',
       cell: (u) => (
         <Button
           className="!px-2.5 !text-sm"

@@ -60,7 +60,7 @@ export function IsolationResult({ run, timeZone, strings, onReview }: Props) {
     },
     {
       key: 'fate',
-      label: '',
+      label: 'Its current',
       cell: (u) => (
         <Tag tone={FATES[u.fate].tone} shape={FATES[u.fate].shape}>
           {FATES[u.fate].words}
@@ -96,7 +96,7 @@ export function IsolationResult({ run, timeZone, strings, onReview }: Props) {
     <div className="grid gap-4">
       {(finding.dropped ?? finding.returned) && (
         <p className="text-sm text-ink-2">
-          {finding.dropped && <>Current went {betweenWords(finding.dropped, timeZone)}</>}
+          {finding.dropped && <>Current fell {betweenWords(finding.dropped, timeZone)}</>}
           {finding.returned && <>, and came back {betweenWords(finding.returned, timeZone)}</>}. Times are
           those of reports: what happened lies between two of them.
         </p>

@@ -15,14 +15,13 @@ import { paths } from '../../schemas/paths';
 import { IsolationForm } from './IsolationStart';
 import { IsolationResult } from './IsolationResult';
 import { isolationModel } from './chart';
-import { isolationWords } from './words';
-
-export const isolationKey = (site: string): string[] => ['isolation', site];
+import { isolationKey, isolationQuery } from './query';
+import { isolationWords, unbroken } from './words';
 
 interface Props {
   siteId: string;
   timeZone: string;
-  initial: IsolationPage;
+  data: IsolationPage;
   strings: readonly StringNow[];
   mayRun: boolean;
   string: string;
@@ -34,7 +33,7 @@ function Said({ run }: { run: IsolationRun }) {
   const words = isolationWords(run);
   return (
     <div role="status">
-      <h3 className="text-[19px] leading-6 tracking-[-0.02em]">{words.heading}</h3>
+      <h3 className="text-[19px] leading-6 tracking-[-0.02em]">{unbroken(words.heading)}</h3>
       <p className="mt-1 text-ink-2">
         {words.strong && <strong className="font-semibold text-ink">{words.strong}</strong>} {words.rest}
       </p>
@@ -59,21 +58,10 @@ function Who({ run, at, timeZone }: { run: IsolationRun; at: string; timeZone: s
 
 /** The decisive way: a person isolates one string, and the page watches whose current goes to zero. */
 export function IsolationSheet(props: Props) {
-  const { siteId, timeZone, initial, strings, mayRun, string, onString, onReview } = props;
+  const { siteId, timeZone, data, strings, mayRun, string, onString, onReview } = props;
   const client = queryClient();
   const key = isolationKey(siteId);
-  const { data, error } = useQuery(
-    {
-      queryKey: key,
-      queryFn: ({ signal }) => api<IsolationPage>(paths.api.isolation(siteId), { signal }),
-      initialData: initial,
-      refetchInterval: (query) =>
-        query.state.data?.open
-          ? Math.min(10_000, Math.max(2000, query.state.data.reportIntervalS * 400))
-          : 15_000,
-    },
-    client,
-  );
+  const { error } = useQuery(isolationQuery(siteId), client);
   const take = (page: IsolationPage) => client.setQueryData(key, page);
   const stop = useMutation(
     {

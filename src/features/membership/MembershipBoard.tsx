@@ -13,9 +13,10 @@ import { queryClient } from '../../lib/query-client';
 import { useViewInUrl } from '../../lib/view-in-url';
 import type { MembershipPage, MembershipView } from '../../schemas/api/membership';
 import { paths } from '../../schemas/paths';
-import { IsolationSheet, isolationKey } from './IsolationSheet';
+import { IsolationSheet } from './IsolationSheet';
+import { isolationKey, isolationQuery } from './query';
 import { SuspectsSheet } from './SuspectsSheet';
-import { membershipWords } from './words';
+import { membershipWords, unbroken } from './words';
 
 const DEFAULTS: MembershipView = { hours: '6', unit: '' };
 
@@ -53,7 +54,8 @@ export function MembershipBoard({ initial, view: asked, mayWrite }: Props) {
   const [review, setReview] = useState<[SlotRef, SlotRef | null] | null>(null);
   const [string, setString] = useState('');
   const [done, setDone] = useState('');
-  const words = membershipWords(page);
+  const { data: isolation } = useQuery({ ...isolationQuery(id), initialData: initial.isolation }, client);
+  const words = membershipWords(page, isolation);
   const onReview = (first: SlotRef, second: SlotRef | null) => setReview([first, second]);
   return (
     <>
@@ -64,7 +66,7 @@ export function MembershipBoard({ initial, view: asked, mayWrite }: Props) {
           { label: 'Roll call', href: paths.rollCall(id) },
         ]}
         finding={{
-          heading: words.heading,
+          heading: unbroken(words.heading),
           sentence: (
             <>
               {words.strong && <strong>{words.strong}</strong>} {words.rest}
@@ -118,11 +120,13 @@ export function MembershipBoard({ initial, view: asked, mayWrite }: Props) {
             }}
           />
         </div>
-        <div className="grid min-w-0 content-start gap-5">
+        <div
+          className={`grid min-w-0 content-start gap-5 ${isolation.open ? 'order-first xl:order-none' : ''}`}
+        >
           <IsolationSheet
             siteId={id}
             timeZone={timeZone}
-            initial={initial.isolation}
+            data={isolation}
             strings={page.strings}
             mayRun={mayWrite}
             string={string}

@@ -22,6 +22,27 @@ const refOf = (s: { stringId: string; position: number }): SlotRef => ({
   position: s.position,
 });
 
+const KEYS = { rust: 'bg-rust', slate: 'bg-slate', petrol: 'bg-petrol' } as const;
+
+/** Which line is whose. */
+function Legend({ suspect: s }: { suspect: MembershipSuspect }) {
+  const keys = [
+    { tone: 'rust', name: unitName(s) },
+    { tone: 'slate', name: `${s.string}, its string` },
+    ...(s.series.otherName ? [{ tone: 'petrol', name: s.series.otherName }] : []),
+  ] as const;
+  return (
+    <ul className="flex flex-wrap gap-x-4 text-sm">
+      {keys.map((k) => (
+        <li key={k.name} className="inline-flex items-center gap-1.5">
+          <span aria-hidden="true" className={`h-[3px] w-4 ${KEYS[k.tone]}`} />
+          {k.name}
+        </li>
+      ))}
+    </ul>
+  );
+}
+
 function Suspect({
   group,
   page,
@@ -68,7 +89,7 @@ function Suspect({
               model={suspectModel(s, page.site.timeZone)}
               height={230}
               fileName={`current-${unitName(s)}`}
-              controls={<span className="font-medium">{unitName(s)}</span>}
+              controls={<Legend suspect={s} />}
             />
           ))}
         </div>

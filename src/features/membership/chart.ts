@@ -6,11 +6,12 @@ import { unitName } from '../../components/placements/suspects';
 /** A unit's current against its own string's and the other's. */
 export function suspectModel(s: MembershipSuspect, timeZone: string): ChartModel {
   const { at, unit, own, other, otherName } = s.series;
+  // the unit last: it lies on the line of the string whose current it carries
   const lines: ChartLine[] = [
-    { name: unitName(s), at, values: unit, tone: 'rust' },
     { name: `${s.string}, its string on the drawing`, at, values: own, tone: 'slate' },
+    ...(otherName ? [{ name: otherName, at, values: other, tone: 'petrol' as const }] : []),
+    { name: unitName(s), at, values: unit, tone: 'rust' },
   ];
-  if (otherName) lines.push({ name: otherName, at, values: other, tone: 'petrol' });
   return {
     title: `Current of ${unitName(s)}`,
     unit: 'A',

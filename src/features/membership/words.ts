@@ -1,9 +1,11 @@
 import { groupsOf, unitName } from '../../components/placements/suspects';
 import { counted, countAtStart, listed, number } from '../../drawings/numbers';
-import type { IsolationRun } from '../../schemas/api/isolation';
+import type { IsolationPage, IsolationRun } from '../../schemas/api/isolation';
 import type { MembershipPage } from '../../schemas/api/membership';
 
 /** The sentences of the page on who is in which string. */
+
+type Finding = IsolationRun['finding'];
 
 export interface Said {
   heading: string;
@@ -11,8 +13,31 @@ export interface Said {
   rest: string;
 }
 
-/** Heading and sentence of the page. */
-export function membershipWords(page: MembershipPage): Said {
+/** A watch that runs, or the newest one where it found somebody who still stands where he doesn't belong. */
+export function decisive(page: MembershipPage, isolation: IsolationPage): IsolationRun | null {
+  if (isolation.open) return isolation.open;
+  const [last] = isolation.runs;
+  if (last?.finding.outcome !== 'told') return null;
+  const stands = (u: Finding['units'][number]): boolean =>
+    page.strings.some(
+      (s) =>
+        s.name === u.string &&
+        s.slots.some((slot) => slot.position === u.position && slot.serial === u.serial),
+    );
+  const wrong = last.finding.units.filter((u) => u.fate === 'member_kept' || u.fate === 'other_dropped');
+  return wrong.some(stands) ? last : null;
+}
+
+/** Names of units stay on one line. */
+export const unbroken = (words: string): string => words.replace(/(\w)-(\d)/g, '$1\u2011$2');
+
+/** Heading and sentence of the page: what isolating a string showed comes before what currents suggest. */
+export function membershipWords(page: MembershipPage, isolation: IsolationPage): Said {
+  const run = decisive(page, isolation);
+  return run ? isolationWords(run) : currentWords(page);
+}
+
+function currentWords(page: MembershipPage): Said {
   const { counts, window, daylight } = page;
   const judged = counts.here + counts.elsewhere + counts.cantTell + counts.fitsNone;
   const hours = `the last ${window.hours} hours`;
@@ -80,7 +105,6 @@ export function membershipWords(page: MembershipPage): Said {
   };
 }
 
-type Finding = IsolationRun['finding'];
 const names = (finding: Finding, fate: Finding['units'][number]['fate']): string[] =>
   finding.units.filter((u) => u.fate === fate).map((u) => unitName(u));
 
@@ -143,7 +167,7 @@ export function isolationWords(run: IsolationRun): Said {
           heading:
             untold === 0
               ? `All ${number(gone.length)} units of ${string} are in it`
-              : `${number(gone.length)} units are in ${string}, ${number(untold)} told nothing`,
+              : `${counted(gone.length, 'unit')} ${gone.length === 1 ? 'is' : 'are'} in ${string}, ${number(untold)} told nothing`,
           strong: '',
           rest: 'No unit of another string went to zero with it.',
         };

@@ -98,7 +98,7 @@ function Row({ page, stop, number, tick, onTick, onLeaveOut }: RowProps) {
               type="button"
               onClick={onLeaveOut}
               className="target px-2 text-sm text-ink-2 hover:text-ink hover:underline"
-              aria-label={`Leave ${stop.key} out of this walk`}
+              aria-label={`Leave out ${stop.key}`}
             >
               Leave out
             </button>
@@ -133,7 +133,7 @@ export function StopList({ page, stops, leftOut, ticks, onTick, onLeaveOut, onPu
           stops.length > 0 && (
             <>
               {stops.filter((s) => ticks.some((t) => t.key === s.key)).length} of {stops.length} ticked ·{' '}
-              <a href={paths.api.walkCsv(page.site.id)} download className="text-petrol hover:underline">
+              <a href={paths.api.walkCsv(page.site.id)} download className="text-petrol underline">
                 all as CSV
               </a>
             </>

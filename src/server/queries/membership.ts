@@ -50,6 +50,22 @@ export async function unitCurrents(
   return { strings, frames };
 }
 
+/** When the site's strings first reported within a window; null: not at all. */
+export async function firstReport(
+  tx: Tx,
+  siteId: number,
+  window: { from: Date; to: Date },
+): Promise<Date | null> {
+  const { rows } = await tx.raw<{ rows: { at: Date | null }[] }>(
+    `select min(first.at) as at from string s
+     cross join lateral (select min(f.at) as at from string_frame f
+       where f.string_id = s.id and f.at >= :from and f.at < :to) first
+     where s.site_id = :siteId and s.kind <> 'shutdown_only'`,
+    { siteId, ...window },
+  );
+  return rows[0]?.at ?? null;
+}
+
 /** Since when each placed unit sits in its slot, where that began within the window: epoch seconds by serial. */
 export async function movedSince(tx: Tx, siteId: number, from: Date): Promise<Map<string, number>> {
   const { rows } = await tx.raw<{ rows: { serial: string; sinceS: number }[] }>(

@@ -3,7 +3,7 @@ import { apartFrom, counterpartOf, typicalOf } from '../../domain/output/members
 import type { MembershipPage, MembershipSuspect, MembershipUnit } from '../../schemas/api/membership';
 import type { Tx } from '../db/transaction';
 import { found } from '../errors';
-import { movedSince, muteUnits, unitCurrents, type CurrentRows } from '../queries/membership';
+import { firstReport, movedSince, muteUnits, unitCurrents, type CurrentRows } from '../queries/membership';
 import { stringsNow } from '../queries/now';
 import { sitesNow } from '../queries/sites-now';
 import { visibleSite, type VisibleSite } from '../queries/visible-site';
@@ -27,7 +27,8 @@ interface Read {
 
 async function read(tx: Tx, siteId: number, hours: number, at: Date): Promise<Read> {
   const from = new Date(at.getTime() - hours * 3_600_000);
-  const stepS = Math.max(60, Math.ceil((hours * 3600) / STEPS_MAX / 60) * 60);
+  const first = (await firstReport(tx, siteId, { from, to: at })) ?? at;
+  const stepS = Math.max(60, Math.ceil((at.getTime() - first.getTime()) / 60_000 / STEPS_MAX) * 60);
   const rows = await unitCurrents(tx, siteId, { from, to: at, stepS });
   const moved = await movedSince(tx, siteId, from);
   const steps = [...new Set(rows.frames.map((f) => f.step))].sort((a, b) => a - b);
