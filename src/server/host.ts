@@ -6,6 +6,7 @@ import { promisify } from 'node:util';
 import zlib from 'node:zlib';
 import node from '@astrojs/node';
 import type { AstroIntegration } from 'astro';
+import { build } from 'esbuild';
 
 type Roles = typeof import('./roles');
 
@@ -37,7 +38,6 @@ async function buildWorker(client: string): Promise<void> {
     .update([...files, ...pages].sort().join('\n'))
     .digest('hex')
     .slice(0, 16);
-  const { build } = await import('esbuild');
   await build({
     entryPoints: [fileURLToPath(new URL('../lib/capture-worker.ts', import.meta.url))],
     outfile: path.join(client, 'capture-worker.js'),

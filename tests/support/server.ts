@@ -6,11 +6,13 @@ import type { TestDatabase } from './database';
 const SERVE = fileURLToPath(new URL('../../src/server/serve.mjs', import.meta.url));
 
 export interface RunningSite {
-  /** http://127.0.0.1:PORT */
+  /** http://127.0.0.1:PORT; https where it was given a certificate. */
   url: string;
   port: number;
   /** What the process said, for a failing test. */
   output(): string;
+  /** Sends the process a signal. */
+  signal(name: NodeJS.Signals): void;
   /** Ends it as a service manager would; gives its exit code. */
   stop(): Promise<number | null>;
   /** Ends it as a power cut would. */
@@ -44,9 +46,10 @@ export async function startSite(db: TestDatabase, env: Record<string, string> = 
     child.once('exit', (code) => reject(new Error(`The site ended with ${code}:\n${said}`)));
   });
   return {
-    url: `http://127.0.0.1:${port}`,
+    url: `${env.TLS_CERT ? 'https' : 'http'}://127.0.0.1:${port}`,
     port,
     output: () => said,
+    signal: (name) => void child.kill(name),
     stop: async () => {
       child.kill('SIGTERM');
       await ended;

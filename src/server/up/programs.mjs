@@ -108,6 +108,31 @@ export async function ensureChromium() {
   return at;
 }
 
+/** Debian's policy file of services: while it says 101, a package that is installed starts nothing. */
+const POLICY = '/usr/sbin/policy-rc.d';
+async function withoutServices(work) {
+  if (fs.existsSync(POLICY)) return work();
+  fs.writeFileSync(POLICY, '#!/bin/sh\nexit 101\n', { mode: 0o755 });
+  try {
+    return await work();
+  } finally {
+    fs.rmSync(POLICY, { force: true });
+  }
+}
+
+/** Debian's nginx, for the test of the recipe that puts it in front of the site. */
+export async function ensureNginx() {
+  const at = process.env.WAKELINE_NGINX ?? '/usr/sbin/nginx';
+  if (fs.existsSync(at)) return at;
+  if (isRoot() && hasApt()) await withoutServices(() => install(['nginx'], 'nginx'));
+  if (!fs.existsSync(at))
+    throw new Stop(
+      `The test of the reverse proxy needs nginx at ${at}.`,
+      'Run "sudo apt-get install -y nginx" once, or set WAKELINE_NGINX to its path, then test again.',
+    );
+  return at;
+}
+
 /**
  * initdb and postgres refuse to run as root: then they get the ids of the postgres account (without su, so
  * without PAM and a terminal). Null for everybody else.
