@@ -87,3 +87,6 @@ export const publicUrl = (settings: Config = config()): string =>
   (
     settings.PUBLIC_URL ?? `${settings.TLS_CERT ? 'https' : 'http'}://${settings.HOST}:${settings.PORT}`
   ).replace(/\/+$/, '');
+
+/** Where a reader of this page reaches the site: as set, else as the page itself was reached. */
+export const publicOrigin = (page: URL): string => config().PUBLIC_URL?.replace(/\/+$/, '') ?? page.origin;

@@ -3,10 +3,10 @@ import { afterAll, beforeAll, beforeEach, describe, expect, it } from 'vitest';
 import type { Actor } from '../../src/domain/access/permissions';
 import { tallyOf } from '../../src/features/commissioning/tally';
 import { rollCallPage as rollCallPageSchema } from '../../src/schemas/api/roll-call';
-import { siteUnderWay } from '../../src/schemas/api/commissioning';
+import { siteSteps } from '../../src/schemas/api/commissioning';
 import { asActor } from '../../src/server/db/transaction';
 import { AppError } from '../../src/server/errors';
-import { sitesUnderWay } from '../../src/server/queries/commissioning';
+import { sitesAndTheirSteps } from '../../src/server/services/commissioning';
 import { rollCallPage } from '../../src/server/services/roll-call-page';
 import { startRollCall } from '../../src/server/services/start-roll-call';
 import { stopRollCall } from '../../src/server/services/stop-roll-call';
@@ -232,7 +232,7 @@ describe('reading a roll call', () => {
 describe('the sites under way', () => {
   it('are those being commissioned and those where a roll call runs, own ones only', async () => {
     const names = async (actor: Actor) =>
-      (await asActor(actor, (tx) => sitesUnderWay(tx))).map((s) => s.name);
+      (await asActor(actor, (tx) => sitesAndTheirSteps(tx))).map((s) => s.name);
     expect(await names(technician)).toEqual([HALL]);
     await start(technician, 'Weirside Clinic');
     expect(await names(technician)).toEqual([HALL, 'Weirside Clinic']);
@@ -254,19 +254,22 @@ describe('the sites under way', () => {
        ($1, $2, 'labels', 'fail', $3, '2026-12-01T09:30Z')`,
       [hall.id, string, technician.personId],
     );
-    const [site] = await asActor(technician, (tx) => sitesUnderWay(tx));
-    expect(siteUnderWay.parse(site)).toMatchObject({
+    const [site] = await asActor(technician, (tx) => sitesAndTheirSteps(tx));
+    const steps = siteSteps.parse(site);
+    expect(steps).toMatchObject({
       name: HALL,
+      units: 184,
       strings: hall.strings.size,
-      slots: 184,
-      placed: 184,
-      roster: 184,
-      heard: 5,
-      heardUnknown: 1,
-      rollCall: { personOnSite: 'Per Aalto', startedBy: 'Bram Ottersley', stoppedAt: null },
-      checks: { strings: 1, failed: 1 },
-      readings: { strings: 1, lastAt: '2026-12-01T10:00:00.000Z' },
-      lastTest: null,
+      rollCallRunning: true,
     });
+    const words = Object.fromEntries(steps.steps.map((step) => [step.key, step.words]));
+    expect(words).toMatchObject({
+      as_built: `184 units, ${hall.strings.size} strings`,
+      roll_call: '5 of 184 heard',
+      shutdown_test: 'not started',
+    });
+    const gaps = steps.steps.flatMap((step) => step.gaps.map((gap) => gap.words));
+    expect(gaps).toContain('1 serial is heard and on no slot.');
+    expect(gaps.filter((gap) => gap.endsWith(': labels failed.'))).toHaveLength(1);
   });
 });

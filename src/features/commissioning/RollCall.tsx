@@ -3,6 +3,7 @@ import { useQuery } from '@tanstack/react-query';
 import { PlaceDialog } from '../../components/placements/PlaceDialog';
 import { SwapDialog } from '../../components/placements/SwapDialog';
 import type { SlotRef } from '../../components/placements/evidence';
+import { Steps } from '../../components/commissioning/Steps';
 import { Caution } from '../../components/ui/Caution';
 import { Heading } from '../../components/ui/Heading';
 import { LiveMark } from '../../components/ui/Live';
@@ -18,14 +19,13 @@ import type { Stranger } from '../../domain/commissioning/suggest';
 import type { PlaceBody } from '../../schemas/api/placing';
 import type { RollCallPage, RollCallView } from '../../schemas/api/roll-call';
 import { CurveSheet } from './CurveSheet';
-import { KnownSteps } from './KnownSteps';
 import { GatewaysSheet, MissingSheet, UnknownSheet } from './Lists';
 import { RunPanel, type StartTyped } from './RunPanel';
 import { WiredSheet } from './WiredSheet';
 import { StringsSheet } from './StringsSheet';
 import { patchRollCall, runChanged } from './live';
 import { outlookOf } from './outlook';
-import { tallyOf } from './tally';
+import { liveSteps, tallyOf } from './tally';
 import { rollCallWords } from './words';
 
 interface Props {
@@ -160,7 +160,7 @@ export function RollCall({ initial, mayRun, mayPlace, view, typed }: Props) {
           <GatewaysSheet page={page} tally={tally} />
         </div>
         <div className="lg:col-span-2 lg:row-start-1 xl:col-span-1 xl:col-start-1 xl:row-span-2">
-          <KnownSteps page={page} tally={tally} open={open} />
+          <Steps site={siteId} steps={liveSteps(page.steps, tally)} here="roll_call" />
         </div>
       </div>
       {dialog?.kind === 'swap' && (

@@ -156,3 +156,11 @@ export function curveOf(
   const points = times.slice(before).map((atS, i) => ({ atS, heard: before + i + 1 }));
   return { before, points };
 }
+
+/** The steps with the roll call as it is heard right now, ahead of the next reading of the page. */
+export const liveSteps = (steps: RollCallPage['steps'], tally: RollTally): RollCallPage['steps'] =>
+  steps.map((step) =>
+    step.key === 'roll_call' && tally.heard > 0
+      ? { ...step, words: `${tally.heard} of ${tally.roster} heard` }
+      : step,
+  );

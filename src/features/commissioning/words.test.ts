@@ -71,14 +71,7 @@ const pageOf = (strings: StringNow[], answers: HeardItem[]): RollCallPage => ({
   gateways: [],
   loggers: [],
   commands: [],
-  known: {
-    strings: strings.length,
-    slots: 0,
-    placed: 0,
-    checks: { strings: 0, failed: 0 },
-    readings: { strings: 0, lastAt: null },
-    lastTest: null,
-  },
+  steps: [],
   passesUntilHeard: [],
 });
 const run = (more: Partial<RollCallRun> = {}): RollCallRun => ({

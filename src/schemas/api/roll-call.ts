@@ -1,6 +1,6 @@
 import { z } from 'zod';
 import { heardItem } from '../live';
-import { siteUnderWay } from './commissioning';
+import { stepNow } from './commissioning';
 import { commandNow, gatewayNow, id, stringNow } from './now';
 
 /** The roll call of a site: who may have answered, who has, and who runs it. Times ISO 8601 in UTC. */
@@ -33,15 +33,8 @@ export const rollCallPage = z.object({
   gateways: z.array(gatewayNow),
   loggers: z.array(z.object({ serial: z.string(), connected: z.boolean(), lastSpokeAt: time.nullable() })),
   commands: z.array(commandNow), // in force other than released: what a unit follows once it is heard
-  /** What is recorded of the site beside the roll call. */
-  known: siteUnderWay.pick({
-    strings: true,
-    slots: true,
-    placed: true,
-    checks: true,
-    readings: true,
-    lastTest: true,
-  }),
+  /** Every step of the site, from as-built to handover. */
+  steps: z.array(stepNow),
   /** Names of unit types here that pass full module voltage until they have answered, as entered in the catalogue. */
   passesUntilHeard: z.array(z.string()),
 });

@@ -1,9 +1,9 @@
 import type { RollCallPage } from '../../schemas/api/roll-call';
 import type { Tx } from '../db/transaction';
 import { found } from '../errors';
-import { sitesUnderWay } from '../queries/commissioning';
 import { answersOf, latestRollCall, loggersOf, typesPassingUntilHeard } from '../queries/roll-call';
 import { visibleSite } from '../queries/visible-site';
+import { siteAndItsSteps } from './commissioning';
 import { gatewaysNow, stringsNow } from '../queries/now';
 import { sitesNow } from '../queries/sites-now';
 
@@ -14,7 +14,6 @@ import { sitesNow } from '../queries/sites-now';
 export async function rollCallPage(tx: Tx, siteRef: string, at: Date): Promise<RollCallPage> {
   const site = found(await visibleSite(tx, siteRef), 'site');
   const [now] = await sitesNow(tx, at, [site.id]);
-  const [known] = await sitesUnderWay(tx, site.id);
   return {
     at: at.toISOString(),
     site: { id: site.ref, name: site.name, place: site.place, timeZone: site.timeZone, stage: site.stage },
@@ -24,7 +23,7 @@ export async function rollCallPage(tx: Tx, siteRef: string, at: Date): Promise<R
     gateways: await gatewaysNow(tx, at, site.id),
     loggers: await loggersOf(tx, site.id, at),
     commands: now?.commands ?? [],
-    known: found(known, 'site'),
+    steps: (await siteAndItsSteps(tx, siteRef)).steps,
     passesUntilHeard: await typesPassingUntilHeard(tx, site.id),
   };
 }
