@@ -54,7 +54,7 @@ const add = (kind: 'plane' | 'inverter' | 'logger' | 'string', values: PartValue
       tx,
       actor,
       siteRef,
-      { kind, values: { ...PART_DEFAULTS[kind], ...values }, alike: 1, reason: '' },
+      { kind, values: { ...PART_DEFAULTS[kind], ...values }, alike: 1, inTurn: false, reason: '' },
       null,
     ),
   );
@@ -256,6 +256,7 @@ describe('an as-built that is made while readings come in', () => {
             homeRunLeavesArray: true,
           },
           alike: 1,
+          inTurn: false,
           reason: '',
         },
         null,

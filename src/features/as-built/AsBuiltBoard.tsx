@@ -107,11 +107,11 @@ export function AsBuiltBoard({ initial, view: initialView, mayWrite, timeZones }
             onOpen={(string) => change({ string })}
             onAdd={(kind) => setEditing({ kind, id: null })}
           />
-          <div className="order-3 grid gap-5 sm:grid-cols-2">
+          <div className="order-3 grid items-start gap-5 sm:grid-cols-2">
             <SiteSheets built={built} mayWrite={mayWrite} onEdit={setEditing} />
           </div>
         </div>
-        <div className="order-2 grid min-w-0 content-start gap-5 sm:grid-cols-2 lg:order-none lg:grid-cols-1">
+        <div className="order-2 grid min-w-0 content-start items-start gap-5 sm:grid-cols-2 lg:order-none lg:grid-cols-1">
           <PartsSheets
             built={built}
             mayWrite={mayWrite}

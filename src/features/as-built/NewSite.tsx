@@ -97,7 +97,12 @@ export function NewSite({ timeZones, timeZone, at }: Props) {
           </div>
         )}
         <div className="flex flex-wrap gap-2">
-          <Button type="submit" weight="primary" disabled={create.isPending || create.isSuccess}>
+          {/* before the script runs a press would send what was typed away as an address */}
+          <Button
+            type="submit"
+            weight="primary"
+            disabled={browserZone === null || create.isPending || create.isSuccess}
+          >
             {create.isPending || create.isSuccess ? 'Creating …' : 'Create the site'}
           </Button>
           <ButtonLink href={paths.commissioning()}>Back to commissioning</ButtonLink>

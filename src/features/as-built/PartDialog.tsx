@@ -68,12 +68,14 @@ export function PartDialog({ built, editing, timeZones, onClose, onSaved }: Prop
   );
   const [form, setForm] = useState<Form>(() => formOf(kind, before));
   const [alike, setAlike] = useState('1');
+  const [inTurn, setInTurn] = useState(true);
   const [reason, setReason] = useState('');
   const [faults, setFaults] = useState<Faults>({});
   const [asking, setAsking] = useState(false);
   const operating = built.site.stage === 'operating';
   const label = id === null ? '' : labelOf(built, kind, before);
 
+  const several = Math.max(1, Math.round(Number(alike)) || 1);
   const done = (added: PartAdded | null) => {
     void client.invalidateQueries({ queryKey: asBuiltKey(site) });
     onSaved(editing, added);
@@ -89,7 +91,7 @@ export function PartDialog({ built, editing, timeZones, onClose, onSaved }: Prop
             kind: kind as Exclude<PartKind, 'site'>,
             values,
             reason,
-            ...(kind === 'string' ? { alike: Math.max(1, Math.round(Number(alike)) || 1) } : {}),
+            ...(kind === 'string' ? { alike: several, inTurn: several > 1 && inTurn } : {}),
           });
         const keys = changedKeys(kind, before, values);
         const some = (of: PartValues) => Object.fromEntries(keys.map((k) => [k, of[k] ?? null]));
@@ -203,6 +205,18 @@ export function PartDialog({ built, editing, timeZones, onClose, onSaved }: Prop
               hint="Names are counted up: B1, B2, B3."
             />
           )}
+          {kind === 'string' && id === null && several > 1 && (
+            <label className="flex min-h-[44px] items-center gap-3 self-center">
+              <input
+                type="checkbox"
+                name="inTurn"
+                checked={inTurn}
+                onChange={(e) => setInTurn(e.target.checked)}
+                className="h-5 w-5 flex-none accent-petrol"
+              />
+              Each on the next input
+            </label>
+          )}
         </div>
         {askReason && (
           <Field
@@ -216,9 +230,13 @@ export function PartDialog({ built, editing, timeZones, onClose, onSaved }: Prop
             hint="A few words; they stay in the history."
           />
         )}
-        <div className="mt-5 flex flex-wrap gap-2">
+        <div className="sticky -bottom-5 -mx-5 -mb-5 mt-5 flex flex-wrap gap-2 border-t border-rule bg-sheet px-5 py-3">
           <Button type="submit" weight="primary" disabled={save.isPending || clash}>
-            {save.isPending ? 'Saving …' : id === null ? `Add the ${words.one}` : 'Save'}
+            {save.isPending
+              ? 'Saving …'
+              : id !== null
+                ? 'Save'
+                : `Add the ${several > 1 ? words.many : words.one}`}
           </Button>
           {id !== null && kind !== 'site' && !asking && (
             <Button onClick={() => setAsking(true)}>Delete …</Button>

@@ -242,7 +242,7 @@ export function SlotsDialog({ built, string, draft, mayWrite, onDraft, onEditStr
           </div>
         )}
         {mayWrite && (
-          <div className="sticky bottom-0 -mx-5 mt-4 flex flex-wrap gap-2 border-t border-rule bg-sheet px-5 py-3">
+          <div className="sticky -bottom-5 -mx-5 -mb-5 mt-4 flex flex-wrap gap-2 border-t border-rule bg-sheet px-5 py-3">
             <Button type="submit" weight="primary" disabled={save.isPending || isEmpty(draft)}>
               {save.isPending ? 'Saving …' : 'Save the slots'}
             </Button>

@@ -118,6 +118,8 @@ export const partAdd = z.strictObject({
   values: partValues,
   /** Strings only: so many alike, their names counted up. */
   alike: z.int().min(1, 'at least one').max(50, '50 at once at most').default(1),
+  /** Of strings alike each is on the next input, the first on the one chosen; false: all on that one. */
+  inTurn: z.boolean().default(false),
   reason,
 });
 export type PartAdd = z.input<typeof partAdd>;

@@ -1,9 +1,10 @@
 import type { z } from 'zod';
 import type { Actor } from '../../domain/access/permissions';
 import { countUp } from '../../domain/commissioning/as-built/count-up';
-import type { AsBuilt, PartAdded, partAdd, placementsBody } from '../../schemas/api/as-built';
+import type { AsBuilt, PartAdded, partAdd, PartValues, placementsBody } from '../../schemas/api/as-built';
+import { namedOptions } from '../../schemas/as-built-values';
 import type { Tx } from '../db/transaction';
-import { found } from '../errors';
+import { AppError, found } from '../errors';
 import { asBuiltParts } from '../queries/as-built';
 import { visibleSite } from '../queries/visible-site';
 import { addPart } from './edit-as-built';
@@ -34,11 +35,12 @@ export async function addFromForm(
   const how = { reason: add.reason, source: 'forms', address };
   if (add.kind === 'string') {
     const names = countUp(String(add.values.name ?? '').trim(), add.alike);
+    const inputs = add.inTurn ? await inputsFrom(tx, site.id, add.values.input, add.alike) : [];
     const made = await addStrings(
       tx,
       actor,
       site.id,
-      names.map((name) => ({ ...add.values, name })),
+      names.map((name, n) => ({ ...add.values, name, ...(inputs[n] !== undefined && { input: inputs[n] }) })),
       how,
       () => 'values.',
     );
@@ -50,6 +52,24 @@ export async function addFromForm(
   const token = newToken();
   await makeLoggerToken(tx, actor, site.id, made.ref, how, token);
   return { ids: [made.ref], token };
+}
+
+/** So many inputs of the site from one on, in the order of the lists. */
+async function inputsFrom(
+  tx: Tx,
+  siteId: number,
+  first: PartValues[string] | undefined,
+  count: number,
+): Promise<string[]> {
+  const all = namedOptions(found(await asBuiltParts(tx, siteId), 'site'), 'input').map((i) => i.id);
+  const from = all.indexOf(String(first ?? ''));
+  if (from < 0) return []; // the check of the string says so
+  const inputs = all.slice(from, from + count);
+  if (inputs.length < count) {
+    const message = `Inverter input: from this one on there are ${inputs.length} inputs, not ${count}. Choose an earlier one, or put them all on one.`;
+    throw new AppError('invalid', { message, fields: [{ field: 'values.input', message }] });
+  }
+  return inputs;
 }
 
 /**
