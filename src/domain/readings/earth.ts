@@ -22,10 +22,14 @@ export const FLOATS_WITHIN = 3 * SOUND_SPREAD;
 /** Spread of a module's voltage against its neighbours', relative. */
 const MISMATCH = 0.01;
 
+/** Of faults on strings of like modules, those whose ratio lies between two places: shade, dirt, resistance in the fault. */
+const BETWEEN_PLACES = 0.1;
+
 /**
  * A sound string floats: to earth a meter shows little and it dies away. With a fault above module k the readings are
- * those of the modules on either side and add up to the string's: −V(− to earth) : V(+ to earth) = k : (n − k). Needs
- * like voltages on all modules: where some units pass and some don't, the place can't be told.
+ * those of the modules on either side and add up to the string's: −V(− to earth) : V(+ to earth) = k : (n − k). That
+ * ratio is a place only where all modules give like voltages (`alike`). Where some units pass and some are in shutdown,
+ * every ratio is as likely as any other: readings that add up are a fault all the same, and its place is not told.
  * Null when nothing was measured to earth or the string itself shows too little.
  */
 export function earthFinding(
@@ -53,12 +57,14 @@ export function earthFinding(
     (positive === null ? 1 : density(positive, forPositive, Math.hypot(sd, meterSd(positive)))) *
     (negative === null ? 1 : density(negative, forNegative, Math.hypot(sd, meterSd(negative))));
   const sound = (1 - PRIOR) * both(0, 0, SOUND_SPREAD * u);
+  const onPlace = PRIOR * (alike ? 1 - BETWEEN_PLACES : 0);
   const places = Array.from({ length: n + 1 }, (_, k) => {
     const below = (k / n) * u;
     const sd = (u / n) * MISMATCH * Math.sqrt((k * (n - k)) / n) + 0.002 * u;
-    return (PRIOR / (n + 1)) * both(u - below, below, sd);
+    return (onPlace / (n + 1)) * both(u - below, below, sd);
   });
-  const faulty = places.reduce((s, p) => s + p, 0);
+  const anywhere = (PRIOR - onPlace) * anyRatio(positive, negative, u, meterSd);
+  const faulty = places.reduce((s, p) => s + p, 0) + anywhere;
   const probability = faulty / (faulty + sound);
   const k = places.indexOf(Math.max(...places));
   const placeProbability = faulty === 0 ? 0 : places[k]! / faulty;
@@ -94,8 +100,26 @@ export function earthFinding(
     placeProbability: alike ? placeProbability : 0,
     words: sure
       ? `A conductor touches earth ${wordsAt(place[0], n)}. Do not connect the string.`
-      : 'A conductor of the string touches earth; the place can not be told. Do not connect the string.',
+      : `A conductor of the string touches earth; the place can not be told${alike ? '' : ', for its modules do not all give the same voltage'}. Do not connect the string.`,
   };
+}
+
+/** Density of readings to earth when any ratio between them is as likely as another: both add up to the string's. */
+function anyRatio(
+  positive: number | null,
+  negative: number | null,
+  u: number,
+  meterSd: (x: number) => number,
+): number {
+  const inside = (x: number): boolean => x > -3 * meterSd(x) && x < u + 3 * meterSd(x);
+  const root2Pi = Math.sqrt(2 * Math.PI); // the densities beside it leave this factor out as well
+  if (positive !== null && negative !== null) {
+    if (!inside(positive) || !inside(negative)) return 0;
+    const sd = Math.hypot(meterSd(positive), meterSd(negative), 0.002 * u);
+    return (root2Pi / u) * (Math.exp(-0.5 * ((positive + negative - u) / sd) ** 2) / sd);
+  }
+  const one = positive ?? negative ?? 0;
+  return inside(one) ? root2Pi / u : 0;
 }
 
 const reversedPlace = (k: number, n: number, voltageV: number): [number, number] => {

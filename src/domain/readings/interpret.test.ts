@@ -135,7 +135,7 @@ describe('calibration over 5,000 simulated readings', () => {
     for (const bin of bins) {
       const given = bin.given / bin.n;
       const right = bin.right / bin.n;
-      // five points, and twice the chance error of so few in the thinnest deciles
+      // five points, and twice the chance error of so few in the thinnest deciles; `npm run bench -- readings` has more
       const chance = 2 * Math.sqrt((given * (1 - given)) / bin.n);
       expect(Math.abs(given - right), `${given} given, ${right} right of ${bin.n}`).toBeLessThan(
         0.05 + (bin.n < 400 ? chance : 0),

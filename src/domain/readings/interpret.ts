@@ -67,8 +67,8 @@ export function interpretReading(question: ReadingQuestion): Interpretation {
     if (h.probability >= 0.002 && !likely.includes(h) && likely.some((l) => sameReading(l, h)))
       likely.push(h);
   const state = expectedState(question);
-  const alike = best.kind === 'all_passing' || best.kind === 'all_in_shutdown' || best.kind === 'reversed';
   const told = best.probability >= TELL_FROM;
+  const alike = told && sameOnAll(posterior);
   const outcome = !told
     ? 'cant_tell'
     : best.kind === 'unpowered'
@@ -90,6 +90,13 @@ export function interpretReading(question: ReadingQuestion): Interpretation {
     obeysInitiator: deaf === 0 ? true : deaf === question.units ? false : null,
     cautions: deaf > 0 ? [ROLL_CALL_CAUTION, READING_CAUTION] : [READING_CAUTION],
   };
+}
+
+/** Whether in the likeliest explanation all modules of the string give the same voltage. */
+function sameOnAll({ hypotheses, probability }: Posterior): boolean {
+  const h = hypotheses[probability.indexOf(Math.max(...probability))]!;
+  const kinds: HypothesisKind[] = ['all_passing', 'all_in_shutdown', 'reversed'];
+  return kinds.includes(h.kind) && (h.passing === 0 || h.inShutdown === 0);
 }
 
 const sameReading = (a: RankedHypothesis, b: RankedHypothesis): boolean =>

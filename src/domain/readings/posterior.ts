@@ -8,14 +8,31 @@ import type { Hypothesis, Meter, ReadingQuestion } from './reading';
  * any of the ways that this string may be).
  */
 
-const GRID_V = 71;
-const GRID_S = 11;
+// closer together than what siblings leave open, or the grid decides instead of them
+const GRID_V = 161;
+const GRID_S = 33;
 const GRID_REACH = 4; // standard deviations
+/** Squared deviation from which on a density counts as none. */
+const Z2_MAX = 60;
 
 const gauss = (x: number, mean: number, variance: number): number => {
   const z2 = ((x - mean) * (x - mean)) / variance;
-  return z2 > 200 ? 0 : Math.exp(-z2 / 2) / Math.sqrt(2 * Math.PI * variance);
+  return z2 > Z2_MAX ? 0 : Math.exp(-z2 / 2) / Math.sqrt(2 * Math.PI * variance);
 };
+
+/** Whether any point of a row of the grid explains the reading at all. */
+function withinReach(
+  h: Hypothesis,
+  v: number,
+  sAxis: readonly { at: number }[],
+  x: number,
+  variance: number,
+): boolean {
+  const from = h.passing * v + h.inShutdown * sAxis[0]!.at;
+  const to = h.passing * v + h.inShutdown * sAxis.at(-1)!.at;
+  const reach = Math.sqrt(Z2_MAX * variance);
+  return x >= Math.min(from, to) - reach && x <= Math.max(from, to) + reach;
+}
 
 const meterVariance = (meter: Meter, voltageV: number): number =>
   (meter.relativeSd * voltageV) ** 2 + meter.sd ** 2;
@@ -96,16 +113,19 @@ function onGrid(question: ReadingQuestion, hypotheses: Hypothesis[], one: OneUni
         });
       else mixed.push([h, variances[i]!]);
     });
+    const likely = vAxis.map((_, a) => sAxis.map((__, b) => flatPart + alongV[a]! + alongS[b]!));
+    for (const [h, variance] of mixed)
+      vAxis.forEach((v, a) => {
+        if (!withinReach(h, v.at, sAxis, sibling.voltageV, variance)) return;
+        const row = likely[a]!;
+        sAxis.forEach((s, b) => {
+          row[b]! += h.prior * gauss(sibling.voltageV, h.passing * v.at + h.inShutdown * s.at, variance);
+        });
+      });
     let most = 0;
-    vAxis.forEach((v, a) =>
-      sAxis.forEach((s, b) => {
-        let likely = flatPart + alongV[a]! + alongS[b]!;
-        for (const [h, variance] of mixed)
-          likely += h.prior * gauss(sibling.voltageV, h.passing * v.at + h.inShutdown * s.at, variance);
-        joint[a]![b]! *= likely;
-        most = Math.max(most, joint[a]![b]!);
-      }),
-    );
+    joint.forEach((row, a) => {
+      for (let b = 0; b < row.length; b++) most = Math.max(most, (row[b]! *= likely[a]![b]!));
+    });
     if (most > 0) for (const row of joint) for (let b = 0; b < row.length; b++) row[b]! /= most;
   }
   const total = joint.reduce((sum, row) => sum + row.reduce((r, w) => r + w, 0), 0);
@@ -114,26 +134,35 @@ function onGrid(question: ReadingQuestion, hypotheses: Hypothesis[], one: OneUni
   const x = question.voltageV;
   const meter = meterVariance(question.meter, x);
   const flat = unexplainedDensity(question.units, one);
+  const moment = (of: (v: number, s: number) => number): number =>
+    joint.reduce(
+      (sum, row, a) => sum + row.reduce((r, w, b) => r + w * of(vAxis[a]!.at, sAxis[b]!.at), 0),
+      0,
+    ) / total;
+  const [meanV, meanS] = [moment((v) => v), moment((_, s) => s)];
+  const varianceV = moment((v) => (v - meanV) ** 2);
+  const varianceS = moment((_, s) => (s - meanS) ** 2);
+  const covariance = moment((v, s) => (v - meanV) * (s - meanS));
   const expectedV: number[] = [];
   const sdV: number[] = [];
   const weight = hypotheses.map((h) => {
     const own = ownVariance(h, one) + meter;
     let likely = 0;
-    let mean = 0;
-    let square = 0;
-    const take = (w: number, at: number): void => {
-      mean += w * at;
-      square += w * at * at;
-      likely += w * gauss(x, at, own);
-    };
-    if (h.inShutdown === 0) vAxis.forEach((v, a) => take(vWeight[a]!, h.passing * v.at));
-    else if (h.passing === 0) sAxis.forEach((s, b) => take(sWeight[b]!, h.inShutdown * s.at));
+    if (h.inShutdown === 0)
+      vAxis.forEach((v, a) => (likely += vWeight[a]! * gauss(x, h.passing * v.at, own)));
+    else if (h.passing === 0)
+      sAxis.forEach((s, b) => (likely += sWeight[b]! * gauss(x, h.inShutdown * s.at, own)));
     else
-      vAxis.forEach((v, a) =>
-        sAxis.forEach((s, b) => take(joint[a]![b]! / total, h.passing * v.at + h.inShutdown * s.at)),
-      );
-    expectedV.push(mean);
-    sdV.push(Math.sqrt(Math.max(0, square - mean * mean) + own));
+      vAxis.forEach((v, a) => {
+        if (!withinReach(h, v.at, sAxis, x, own)) return;
+        sAxis.forEach((s, b) => {
+          likely += (joint[a]![b]! / total) * gauss(x, h.passing * v.at + h.inShutdown * s.at, own);
+        });
+      });
+    expectedV.push(h.passing * meanV + h.inShutdown * meanS);
+    const common =
+      h.passing ** 2 * varianceV + h.inShutdown ** 2 * varianceS + 2 * h.passing * h.inShutdown * covariance;
+    sdV.push(Math.sqrt(Math.max(0, common) + own));
     return h.prior * (h.kind === 'unexplained' ? flat : likely);
   });
   return { hypotheses, probability: normalised(weight), expectedV, sdV };
