@@ -41,7 +41,7 @@ export function TestLines({
   height = 280,
   paint = SCREEN,
 }: Props) {
-  const plot = { left: 44, right: width - 14, top: 18, bottom: height - 28 };
+  const plot = { left: 44, right: width - 22, top: 18, bottom: height - 28 };
   const drawn = lines.map((l) => ({ ...l, points: l.points.filter(([s]) => s >= FROM_S && s <= LAST_S) }));
   const lastS = Math.max(
     SPAN_S,

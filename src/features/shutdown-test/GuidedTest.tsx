@@ -146,13 +146,23 @@ export function GuidedTest({ initial, person, mayRun }: Props) {
                   Shutdown is not isolation. Wakeline switches nothing; a person does.
                 </Caution>
               </div>
-              <RoundStep key={step} test={test} index={step} mayWrite={mayWrite} />
+              <RoundStep key={step} test={test} index={step} mayWrite={mayWrite} onEnded={() => go(step)} />
               {record.rounds[step].ended && (
                 <AfterRound test={test} index={step} mayWrite={mayWrite} go={go} />
               )}
             </>
           )}
-          {step === 'sign' && <SignStep test={test} person={person.name} mayWrite={mayWrite} />}
+          {step === 'sign' && (
+            <SignStep
+              test={test}
+              person={person.name}
+              mayWrite={mayWrite}
+              onAnotherRound={() => {
+                test.act({ kind: 'round_added', transmitter: null });
+                go(record.rounds.length);
+              }}
+            />
+          )}
           {mayWrite && (
             <div className="mt-4 lg:hidden">
               <EndTest test={test} />

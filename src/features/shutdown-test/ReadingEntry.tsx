@@ -48,7 +48,7 @@ export function ReadingEntry({ string, round, moment, timeLimitS, clockS, onSave
     setText({ ...text, [place]: value });
     // the first key stamps the reading: nobody can type three numbers in no time
     if (moment === 'after' && seconds.text === '' && value !== '')
-      setSeconds({ text: String(Math.round(clockS() ?? 0)), from: 'clock' });
+      setSeconds({ text: String(Math.ceil(clockS() ?? 0)), from: 'clock' });
   };
   const submit = (event?: SubmitEvent) => {
     event?.preventDefault();
@@ -137,7 +137,7 @@ export function ReadingEntry({ string, round, moment, timeLimitS, clockS, onSave
                   setPlace(key);
                   setText({ ...text, [key]: e.target.value });
                   if (moment === 'after' && seconds.text === '' && e.target.value !== '')
-                    setSeconds({ text: String(Math.round(clockS() ?? 0)), from: 'clock' });
+                    setSeconds({ text: String(Math.ceil(clockS() ?? 0)), from: 'clock' });
                 }}
                 className="min-h-[48px] w-0 min-w-[90px] flex-1 bg-transparent text-right text-[32px] font-semibold leading-[40px] tracking-[-0.03em] placeholder:text-rule"
               />

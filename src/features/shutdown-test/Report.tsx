@@ -55,7 +55,7 @@ export function Report({ report, mayRun }: Props) {
                 label={record.verdict.result === 'passed' ? 'Start a newer test' : 'Repeat for what is open'}
               />
             )}
-            <Button onClick={() => window.print()}>Print</Button>
+            <Button onClick={printWhole}>Print</Button>
           </>
         }
       />
@@ -90,6 +90,12 @@ export function Report({ report, mayRun }: Props) {
       {record ? <Whole report={report} record={record} /> : <Earlier report={report} />}
     </>
   );
+}
+
+/** On paper everything lies open. */
+function printWhole(): void {
+  for (const folded of document.querySelectorAll('details')) folded.open = true;
+  window.print();
 }
 
 function Fact({ name, children }: { name: string; children: ReactNode }) {

@@ -94,12 +94,9 @@ export function Results({ verdict, siteId, timeZone }: Props) {
     <>
       <Sheet id="results" title="Result by string" aside={`limits: ${verdict.limits.source}`}>
         {verdict.strings.length === 0 && <Notice kind="empty" title="No string has been tested yet" />}
-        <ul>
+        <ul className="grid gap-x-10 xl:grid-cols-2">
           {verdict.strings.map((s) => (
-            <li
-              key={s.string}
-              className="border-b border-rule-faint py-3 first:pt-0 last:border-b-0 last:pb-0"
-            >
+            <li key={s.string} className="border-b border-rule-faint py-2">
               <div className="flex flex-wrap items-center gap-x-3 gap-y-1">
                 <span className="text-[17px] font-semibold">{s.name}</span>
                 <ResultTag result={s.result} />

@@ -15,8 +15,15 @@ import type { TestInHand } from './use-test';
 
 const mmss = (s: number): string => `${Math.floor(s / 60)}:${String(Math.floor(s % 60)).padStart(2, '0')}`;
 
+interface Props {
+  test: TestInHand;
+  index: number;
+  mayWrite: boolean;
+  onEnded: () => void;
+}
+
 /** Steps 3 to 5 of one round: watch, a person operates, read, release, watch the return. */
-export function RoundStep({ test, index, mayWrite }: { test: TestInHand; index: number; mayWrite: boolean }) {
+export function RoundStep({ test, index, mayWrite, onEnded }: Props) {
   const { page, record, act } = test;
   const { facts, verdict, watch } = page;
   const round = record.rounds[index]!;
@@ -163,7 +170,10 @@ export function RoundStep({ test, index, mayWrite }: { test: TestInHand; index: 
                 <Button
                   weight="primary"
                   className="mt-2 w-full sm:w-auto"
-                  onClick={() => act({ kind: 'round_ended', round: index })}
+                  onClick={() => {
+                    act({ kind: 'round_ended', round: index });
+                    onEnded();
+                  }}
                 >
                   End this round
                 </Button>
@@ -171,9 +181,6 @@ export function RoundStep({ test, index, mayWrite }: { test: TestInHand; index: 
             )}
           </div>
         )}
-      </Sheet>
-      <Sheet id="lines" title="Voltage of each string" aside={`limits: ${verdict.limits.source}`} flush>
-        <RoundDrawing facts={facts} strings={strings} round={round} seen={seen} limits={verdict.limits} />
       </Sheet>
       <Sheet
         id="strings"
@@ -189,6 +196,9 @@ export function RoundStep({ test, index, mayWrite }: { test: TestInHand; index: 
           onRead={(string, moment) => setReading({ string, moment })}
           onStrike={setStrike}
         />
+      </Sheet>
+      <Sheet id="lines" title="Voltage of each string" aside={`limits: ${verdict.limits.source}`} flush>
+        <RoundDrawing facts={facts} strings={strings} round={round} seen={seen} limits={verdict.limits} />
       </Sheet>
       <Dialog
         open={reading !== null}

@@ -13,16 +13,15 @@ import type { SignTest } from '../../schemas/api/shutdown-test';
 import { HazardCard, Results } from './Results';
 import type { TestInHand } from './use-test';
 
-/** Step 6: what was shown, what is missing, and the signature. */
-export function SignStep({
-  test,
-  person,
-  mayWrite,
-}: {
+interface Props {
   test: TestInHand;
   person: string;
   mayWrite: boolean;
-}) {
+  onAnotherRound: () => void;
+}
+
+/** Step 6: what was shown, what is missing, and the signature. */
+export function SignStep({ test, person, mayWrite, onAnotherRound }: Props) {
   const { page, record, act } = test;
   const { verdict, site } = page;
   const [remark, setRemark] = useState('');
@@ -61,6 +60,11 @@ export function SignStep({
         </Sheet>
       )}
       <Results verdict={verdict} siteId={site.id} timeZone={site.timeZone} />
+      {mayWrite && open === undefined && verdict.missing.length > 0 && (
+        <div>
+          <Button onClick={onAnotherRound}>Another round by the initiator, to read what is missing</Button>
+        </div>
+      )}
       <Sheet id="remarks" title="Remarks">
         {record.remarks.map((r) => (
           <p key={r.at} className="mb-1">

@@ -25,7 +25,7 @@ function Now({ s, timeLimitS, sinceS }: { s: StringNow; timeLimitS: number; sinc
   const late = s.newest.afterS >= timeLimitS;
   const input = s.source.startsWith('inverter');
   return (
-    <span className="inline-flex flex-wrap items-center justify-end gap-x-2">
+    <span className="inline-flex flex-wrap items-center gap-x-2">
       <span className="tabular-nums">
         <span className="text-[17px] font-semibold">{volts(s.newest.volts)}</span>{' '}
         <span className="text-sm text-ink-2">at {Math.round(s.newest.afterS)} s</span>
@@ -64,35 +64,37 @@ export function StringRows({ strings, timeLimitS, sinceS, released, mayWrite, on
       {strings.map((s) => {
         const units = s.conduct?.units.filter((u) => u.serial !== null) ?? [];
         const down = units.filter((u) => u.followed !== null || u.downBefore).length;
+        const gone = units.filter((u) => u.followed !== null).length;
+        const back = units.filter((u) => u.returned !== null).length;
         return (
           <li key={s.part.id} className="border-b border-rule-faint py-2 last:border-b-0">
-            <div className="flex flex-wrap items-center justify-between gap-x-3 gap-y-1">
-              <div className="min-w-0">
-                <p className="text-[17px] font-semibold">{s.part.name}</p>
-                <p className="text-sm text-ink-2">
-                  {sinceS !== null &&
-                    s.part.kind !== 'shutdown_only' &&
-                    `${down} of ${units.length} in shutdown, `}
-                  {s.newest || s.points.length > 0
-                    ? s.source
-                    : s.part.kind === 'shutdown_only'
-                      ? 'its units tell nothing'
-                      : ''}
-                  {!s.part.homeRunLeavesArray && ' · home run inside the array'}
-                </p>
-              </div>
-              <div className="ml-auto flex flex-wrap items-center justify-end gap-2">
-                {!released && <Now s={s} timeLimitS={timeLimitS} sinceS={sinceS} />}
-                {mayWrite && !released && (
-                  <Button
-                    onClick={() => onRead(s, moment)}
-                    aria-label={`Reading of ${s.part.name} ${moment} the command`}
-                  >
-                    {moment === 'before' ? 'Read before' : 'Add reading'}
-                  </Button>
-                )}
-              </div>
+            <div className="flex items-center justify-between gap-3">
+              <p className="text-[17px] font-semibold">{s.part.name}</p>
+              {mayWrite && !released && (
+                <Button
+                  onClick={() => onRead(s, moment)}
+                  aria-label={`Reading of ${s.part.name} ${moment} the command`}
+                >
+                  {moment === 'before' ? 'Read before' : 'Add reading'}
+                </Button>
+              )}
             </div>
+            {!released && <Now s={s} timeLimitS={timeLimitS} sinceS={sinceS} />}
+            <p className="text-sm text-ink-2">
+              {!released &&
+                sinceS !== null &&
+                s.part.kind !== 'shutdown_only' &&
+                `${down} of ${units.length} in shutdown, `}
+              {released &&
+                s.part.kind !== 'shutdown_only' &&
+                `${gone} of ${units.length} went, ${back} came back, `}
+              {s.newest || s.points.length > 0
+                ? s.source
+                : s.part.kind === 'shutdown_only'
+                  ? 'its units tell nothing'
+                  : ''}
+              {!s.part.homeRunLeavesArray && ' · home run inside the array'}
+            </p>
             {s.readings.map((r) => (
               <p
                 key={r.id}
