@@ -1,14 +1,13 @@
 import { PERSON_HEADER } from '../schemas/api/capture';
 import { paths } from '../schemas/paths';
-import { api, ApiError, errorOf, withQuery, type QueryValue } from './api';
+import { api, ApiError, withQuery, type QueryValue } from './api';
 import type { Answer, Problem, Waiting } from './capture-queue';
 import type { KeptPhoto } from './capture-store';
+import { uploadFile } from './upload';
 
 /** Hands one record to the server and says what its answer means for the queue. */
 
 const ANSWER_WITHIN_MS = 30_000;
-/** A photo over a bad connection: slow is not broken, but a minute without a byte is. */
-const SILENT_MS = 60_000;
 
 const problemOf = (error: ApiError): Problem => ({
   title: error.title,
@@ -66,47 +65,7 @@ async function sendPhoto(record: Waiting, transport: Transport): Promise<unknown
       'Its bytes are no longer on this phone. Take it again, or leave it out.',
     );
   const url = withQuery(paths.api.attachments(record.site), record.body as Record<string, QueryValue>);
-  return upload(url, photo, record.person, (share) => transport.progress?.(record.ref, share));
-}
-
-/** By XMLHttpRequest: fetch does not tell how much of a body is sent. */
-function upload(
-  url: string,
-  photo: KeptPhoto,
-  person: string,
-  progress: (share: number) => void,
-): Promise<unknown> {
-  return new Promise((resolve, reject) => {
-    const request = new XMLHttpRequest();
-    let silence: ReturnType<typeof setTimeout> | undefined;
-    const broken = () => reject(new ApiError(0, 'The server is out of reach', 'No answer came.'));
-    const listen = () => {
-      clearTimeout(silence);
-      silence = setTimeout(() => request.abort(), SILENT_MS);
-    };
-    request.open('POST', url);
-    request.setRequestHeader('accept', 'application/json');
-    request.setRequestHeader('content-type', photo.type || 'application/octet-stream');
-    request.setRequestHeader(PERSON_HEADER, person);
-    request.upload.onprogress = (event) => {
-      listen();
-      if (event.lengthComputable) progress(event.loaded / event.total);
-    };
-    request.onabort = broken;
-    request.onerror = broken;
-    request.onload = () => {
-      const body = request.status === 204 ? null : request.responseText;
-      const retryAfter = request.getResponseHeader('retry-after');
-      const response = new Response(body, {
-        status: request.status,
-        headers: retryAfter ? { 'retry-after': retryAfter } : {},
-      });
-      if (!response.ok) errorOf(response).then(reject, reject);
-      else if (body === null) resolve(undefined);
-      else response.json().then(resolve, broken);
-    };
-    request.onloadend = () => clearTimeout(silence);
-    listen();
-    request.send(photo.bytes);
-  });
+  const file = new Blob([photo.bytes], { type: photo.type });
+  const share = (sent: number) => transport.progress?.(record.ref, sent);
+  return uploadFile(url, file, share, { [PERSON_HEADER]: record.person });
 }

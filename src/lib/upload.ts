@@ -39,7 +39,11 @@ export function uploadFile<T>(
     request.onabort = broken;
     request.onerror = broken;
     request.onload = () => {
-      const response = new Response(request.responseText, { status: request.status });
+      const retryAfter = request.getResponseHeader('retry-after');
+      const response = new Response(request.responseText, {
+        status: request.status,
+        headers: retryAfter ? { 'retry-after': retryAfter } : {},
+      });
       if (response.ok) response.json().then((body) => resolve(body as T), broken);
       else errorOf(response).then(reject, reject);
     };
