@@ -190,4 +190,31 @@ describe('a measured string on its input', () => {
       expect(judgeInput(memory, context, reading(NOON + 60 * k, 346, { currentA: 9 }))).toBe(UNCHANGED);
     }
   });
+  it('of units that measure their module only is held against what they claim', () => {
+    const context = contextOf('monitored', [released], 10);
+    context.behaviour = { ...context.behaviour, measures: 'input' };
+    const claims = (atS: number, state: number[]) => ({
+      atS,
+      state,
+      voltageIn: state.map(() => 3500),
+    });
+    const judged = (volts: number, state: number[]) => {
+      const memory = newMemory(context);
+      return [0, 1, 2].map((k) => {
+        judgeFrame(memory, context, claims(NOON + 60 * k, state));
+        return judgeInput(memory, context, reading(NOON + 60 * k, volts, { currentA: 7 })).finding;
+      })[2];
+    };
+    const all = new Array<number>(10).fill(1);
+    expect(judged(346, all)).toBeFalsy();
+    const lacking = judged(312, all)?.finding;
+    expect(lacking).toMatchObject({ kind: 'unexplained_voltage', evidence: { expectedV: 350 } });
+    expect(lacking?.evidence.couldBe[0]).toBe('a unit that claims to pass does not');
+    expect(lacking?.evidence.thresholdSource).toContain('what the units claim');
+    // the one that says it is in shutdown explains the voltage, and has a verdict of its own
+    expect(judged(312, [2, ...all.slice(1)])).toBeFalsy();
+    // an optimizing unit moves its output: its module's voltage says nothing of it
+    context.behaviour = { ...context.behaviour, kind: 'optimizing' };
+    expect(judged(250, all)).toBeFalsy();
+  });
 });

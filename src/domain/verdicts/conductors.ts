@@ -150,7 +150,9 @@ function whileReleased(
       measuredV: voltageV,
       expectedV: memory.sumV,
       thresholdV,
-      thresholdSource: 'two thirds of a module or 3.5 standard deviations of the two measurements',
+      thresholdSource: `two thirds of a module or 3.5 standard deviations of the two measurements${
+        memory.sumAssumed ? '; the sum is what the units claim' : ''
+      }`,
       units: null,
       unitsRange: null,
       ofN: units,
@@ -164,6 +166,7 @@ function whileReleased(
               'the string sits on another input',
             ]
           : [
+              ...(memory.sumAssumed ? ['a unit that claims to pass does not'] : []),
               'an open connector or fuse: the string is not on this input',
               'resistance in the home run',
               'the string sits on another input',

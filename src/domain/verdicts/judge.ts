@@ -16,7 +16,14 @@ import {
   type UnitChange,
 } from './evidence';
 import { NO_STATE, SEEN_PASSING, SEEN_SHUTDOWN, type StringMemory } from './memory';
-import { MEASURED, outputLimits, scanFrame, type JudgedFrame } from './observe';
+import {
+  claimedSum,
+  MEASURED,
+  outputFollowsClaim,
+  outputLimits,
+  scanFrame,
+  type JudgedFrame,
+} from './observe';
 import { UNIT_STATES, VERDICTS } from './codes';
 
 /**
@@ -92,6 +99,14 @@ export function judgeFrame(memory: StringMemory, context: StringContext, frame: 
   if (outputs === units && units > 0) {
     memory.sumV = outputSum / 100;
     memory.sumAtS = atS;
+    memory.sumAssumed = false;
+  } else if (outputs === 0 && heard === units && units > 0 && outputFollowsClaim(context.behaviour)) {
+    const sum = claimedSum(frame);
+    if (sum !== null) {
+      memory.sumV = sum;
+      memory.sumAtS = atS;
+      memory.sumAssumed = true;
+    }
   }
   if (unsettled === 0 && !newCommand) return UNCHANGED;
 

@@ -68,6 +68,8 @@ export interface StringMemory {
   /** Sum of unit outputs (V) in the newest frame that had all of them, and its time. */
   sumV: number;
   sumAtS: number;
+  /** That sum rests on claims and on what the modules give; not kept by earlier versions. */
+  sumAssumed?: boolean;
   finding: Finding | null;
   /** A finding on its way in (or, '' while one stands, on its way out), and how many readings agree. */
   pending: StringFinding | '';

@@ -99,6 +99,26 @@ export function scanFrame(limits: OutputLimits, frame: JudgedFrame, settled: num
   return scan;
 }
 
+/** Units that measure their module only and, while they pass, give its voltage on unchanged. */
+export const outputFollowsClaim = (behaviour: Pick<UnitBehaviour, 'kind' | 'measures'>): boolean =>
+  behaviour.kind === 'monitored' && behaviour.measures === 'input';
+
+/**
+ * What the outputs of a string add up to, V, if every unit does what it claims: its module's voltage where it claims to
+ * pass, next to nothing where it claims shutdown. Null where a claim or a module's voltage is missing.
+ */
+export function claimedSum({ state, voltageIn }: JudgedFrame): number | null {
+  let sum = 0;
+  for (let i = 0; i < state.length; i++) {
+    const claim = state[i];
+    if (claim === null || claim === undefined || claim === SHUTDOWN || claim === STARTING) continue;
+    const behind = voltageIn?.[i];
+    if (claim !== PASSING || behind === null || behind === undefined) return null;
+    sum += behind / 100;
+  }
+  return sum;
+}
+
 /**
  * Output (V) that a unit's claim stands for, where its output isn't measured: drawn dashed and called assumed.
  * `modulePassingV` is what its module gives now (voc on an open string, its working voltage under load); `underLoad`
