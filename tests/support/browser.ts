@@ -10,17 +10,24 @@ const FLAGS = [
   '--disable-sync',
 ];
 
-/** Debian's Chromium, without a window. The caller closes it. */
-export const startBrowser = (): Promise<Browser> =>
+/** Debian's Chromium, without a window; `more` flags where a test needs a camera, say. The caller closes it. */
+export const startBrowser = (more: readonly string[] = []): Promise<Browser> =>
   chromium.launch({
     executablePath: process.env.WAKELINE_CHROMIUM ?? '/usr/bin/chromium',
     headless: true,
-    args: FLAGS,
+    args: [...FLAGS, ...more],
   });
 
 /** Waits until the islands of a page have taken over: what is done before falls on deaf ears. */
 export const hydrated = (page: Page): Promise<unknown> =>
-  page.waitForFunction(() => document.querySelectorAll('astro-island[ssr][client="load"]').length === 0);
+  page.waitForFunction(() =>
+    [...document.querySelectorAll('astro-island[client="load"]')].every((island) => {
+      if (island.hasAttribute('ssr')) return false;
+      // the attribute goes when hydration begins; elements that React has taken over carry its mark
+      const first = island.querySelector(':scope > :not(template, script, style, link)');
+      return !first || Object.keys(first).some((key) => key.startsWith('__reactProps'));
+    }),
+  );
 
 /** Waits until type is loaded and a change of size or colours has been drawn. */
 export const settled = (page: Page): Promise<unknown> =>

@@ -15,6 +15,9 @@ interface Props {
   onMatch: (column: ImportColumn, index: number | null) => void;
 }
 
+/** Different values of a column. */
+const SHOWN = 3;
+
 /** Which column of the file is which of ours, guessed and changeable, with what stands in it. */
 export function ColumnsSheet({ facts, match, onMatch }: Props) {
   const used = new Set(Object.values(match));
@@ -34,7 +37,9 @@ export function ColumnsSheet({ facts, match, onMatch }: Props) {
           const index = match[column];
           const needed = REQUIRED_COLUMNS.includes(column);
           const values = index === null ? [] : facts.samples.map((row) => (row[index] ?? '').trim());
-          const shown = values.filter((v) => v !== '').map((v) => (v.length > 24 ? `${v.slice(0, 23)}…` : v));
+          const shown = [...new Set(values.filter((v) => v !== ''))]
+            .slice(0, SHOWN)
+            .map((v) => (v.length > 24 ? `${v.slice(0, 23)}…` : v));
           return (
             <Choice
               key={column}

@@ -29,7 +29,7 @@ export interface FileFacts {
   /** The first row, or names made up where the file has no header. */
   headers: string[];
   hasHeader: boolean;
-  /** Three rows of values. */
+  /** The first rows of values. */
   samples: string[][];
   match: ColumnMatch;
   faults: { line: number; message: string }[];
@@ -54,7 +54,7 @@ export interface CheckedFile {
 }
 
 export const cellKey = (line: number, column: ImportColumn): string => `${line}:${column}`;
-const SAMPLES = 3;
+const SAMPLES = 40;
 
 /** Holds a file while the person looks at it: in a worker, so that 10,000 rows never make the page wait. */
 export class Desk {

@@ -9,6 +9,8 @@ interface Props {
   onSlots: (slots: readonly RoofSlot[]) => void;
 }
 
+const ROW = 'grid grid-cols-[64px_1fr_1fr] items-center gap-2 sm:grid-cols-[64px_110px_110px_minmax(0,1fr)]';
+
 /** Each module's place in figures and words, editable one by one. */
 export function PlacesSheet({ string, slots, mayWrite, onSlots }: Props) {
   const set = (position: number, some: Partial<RoofSlot>) =>
@@ -16,69 +18,50 @@ export function PlacesSheet({ string, slots, mayWrite, onSlots }: Props) {
   const figure = (value: number | null) => (value === null ? '–' : value.toFixed(2));
   return (
     <Sheet id="places" title={`Places of ${string.name}`} aside="as a person finds them" flush>
-      <div className="overflow-x-auto">
-        <table className="w-full border-collapse text-left">
-          <caption className="sr-only">Positions of {string.name} and where they are</caption>
-          <thead>
-            <tr className="border-b border-rule text-sm text-ink-2">
-              <th scope="col" className="w-12 py-1 pr-2 font-medium">
-                Position
-              </th>
-              <th scope="col" className="w-28 py-1 font-medium">
-                East (m)
-              </th>
-              <th scope="col" className="w-28 py-1 font-medium">
-                North (m)
-              </th>
-              <th scope="col" className="min-w-[220px] py-1 font-medium">
-                In words
-              </th>
-            </tr>
-          </thead>
-          <tbody>
-            {slots.map((slot) => (
-              <tr key={slot.position} className="border-b border-rule-faint">
-                <th scope="row" className="py-1 font-medium">
-                  {slot.position}
-                </th>
-                {mayWrite ? (
-                  <>
-                    <td className="py-1 pr-2">
-                      <MetresInput
-                        label={`Position ${slot.position}, east`}
-                        value={slot.roofX}
-                        onValue={(roofX) => set(slot.position, { roofX })}
-                      />
-                    </td>
-                    <td className="py-1 pr-2">
-                      <MetresInput
-                        label={`Position ${slot.position}, north`}
-                        value={slot.roofY}
-                        onValue={(roofY) => set(slot.position, { roofY })}
-                      />
-                    </td>
-                    <td className="py-1">
-                      <input
-                        aria-label={`Position ${slot.position} in words`}
-                        value={slot.roofPlace}
-                        maxLength={200}
-                        onChange={(event) => set(slot.position, { roofPlace: event.target.value })}
-                        className="min-h-[44px] w-full rounded border border-rule bg-sheet px-2 text-[16px]"
-                      />
-                    </td>
-                  </>
-                ) : (
-                  <>
-                    <td className="py-1.5">{figure(slot.roofX)}</td>
-                    <td className="py-1.5">{figure(slot.roofY)}</td>
-                    <td className="py-1.5">{slot.roofPlace || '–'}</td>
-                  </>
-                )}
-              </tr>
-            ))}
-          </tbody>
-        </table>
+      <div aria-hidden="true" className={`${ROW} border-b border-rule pb-1 text-sm font-medium text-ink-2`}>
+        <span>Position</span>
+        <span>East (m)</span>
+        <span>North (m)</span>
+        <span className="hidden sm:block">In words</span>
       </div>
+      <ol>
+        {slots.map((slot) => (
+          <li key={slot.position} className={`${ROW} border-b border-rule-faint py-1`}>
+            <span className="font-medium">{slot.position}</span>
+            {mayWrite ? (
+              <>
+                <div>
+                  <MetresInput
+                    label={`Position ${slot.position}, east`}
+                    value={slot.roofX}
+                    onValue={(roofX) => set(slot.position, { roofX })}
+                  />
+                </div>
+                <div>
+                  <MetresInput
+                    label={`Position ${slot.position}, north`}
+                    value={slot.roofY}
+                    onValue={(roofY) => set(slot.position, { roofY })}
+                  />
+                </div>
+                <input
+                  aria-label={`Position ${slot.position} in words`}
+                  value={slot.roofPlace}
+                  maxLength={200}
+                  onChange={(event) => set(slot.position, { roofPlace: event.target.value })}
+                  className="col-span-3 min-h-[44px] w-full rounded border border-rule bg-sheet px-2 text-[16px] sm:col-span-1"
+                />
+              </>
+            ) : (
+              <>
+                <span>{figure(slot.roofX)}</span>
+                <span>{figure(slot.roofY)}</span>
+                <span className="col-span-3 sm:col-span-1">{slot.roofPlace || '–'}</span>
+              </>
+            )}
+          </li>
+        ))}
+      </ol>
     </Sheet>
   );
 }

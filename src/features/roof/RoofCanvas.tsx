@@ -25,7 +25,6 @@ interface Props {
   onRemove: (index: number) => void;
 }
 const WIDTH = 1000;
-const MARGIN = 30;
 /** Half of a finger's target, in CSS pixels. */
 const FINGER_PX = 22;
 
@@ -61,10 +60,12 @@ export function RoofCanvas({ outline, paths, start, mode, onPoint, onMove, onRem
     south: span.south - around,
     north: Math.max(span.north + around, span.south + 7),
   };
-  // the sheet must not move under a finger that drags on it
-  const sheet = dragged?.sheet ?? sheetOf(wide, WIDTH, MARGIN);
-  const origin = dragged ?? { west: wide.west, north: wide.north };
+  // room for the names of strings that begin at the edge
   const px = WIDTH / shownWidth;
+  const margin = 10 + 26 * px;
+  // the sheet must not move under a finger that drags on it
+  const sheet = dragged?.sheet ?? sheetOf(wide, WIDTH, margin);
+  const origin = dragged ?? { west: wide.west, north: wide.north };
   const line = (list: readonly RoofPoint[]): string =>
     list
       .map((p) => sheet.at(p))
@@ -75,8 +76,8 @@ export function RoofCanvas({ outline, paths, start, mode, onPoint, onMove, onRem
     if (!matrix) return null;
     const at = new DOMPoint(event.clientX, event.clientY).matrixTransform(matrix.inverse());
     return {
-      x: toDecimetre((at.x - MARGIN) / sheet.scale + origin.west),
-      y: toDecimetre(origin.north - (at.y - MARGIN) / sheet.scale),
+      x: toDecimetre((at.x - margin) / sheet.scale + origin.west),
+      y: toDecimetre(origin.north - (at.y - margin) / sheet.scale),
     };
   };
   const byKey = (index: number) => (event: KeyboardEvent) => {
@@ -92,11 +93,13 @@ export function RoofCanvas({ outline, paths, start, mode, onPoint, onMove, onRem
     else return;
     event.preventDefault();
   };
+  /** Room below for what says how large it is and where north is. */
+  const foot = 34 * px;
   const metre = 5 * Math.ceil((wide.east - wide.west) / 50);
   return (
     <svg
       ref={svg}
-      viewBox={`0 0 ${WIDTH} ${sheet.height.toFixed(0)}`}
+      viewBox={`0 0 ${WIDTH} ${(sheet.height + foot).toFixed(0)}`}
       width="100%"
       role="group"
       aria-label={`Roof from above with ${outline.length} points of its outline and ${paths.filter((p) => p.spots.length > 0).length} strings`}
@@ -173,7 +176,7 @@ export function RoofCanvas({ outline, paths, start, mode, onPoint, onMove, onRem
           );
         })}
       <g
-        transform={`translate(${WIDTH - 34 * px} ${14 * px}) scale(${px})`}
+        transform={`translate(${WIDTH - margin - 18 * px} ${sheet.height + 2 * px}) scale(${0.8 * px})`}
         fill={SCREEN.ink}
         aria-hidden="true"
       >
@@ -183,7 +186,7 @@ export function RoofCanvas({ outline, paths, start, mode, onPoint, onMove, onRem
         </text>
       </g>
       <g
-        transform={`translate(${MARGIN} ${sheet.height - 12})`}
+        transform={`translate(${margin} ${sheet.height + 14 * px})`}
         stroke={SCREEN.ink}
         strokeWidth={1.5 * px}
         aria-hidden="true"
@@ -234,7 +237,15 @@ function StringPath({ path, sheet, px }: { path: DrawnPath; sheet: Sheet; px: nu
           />
         );
       })}
-      <g fontSize={12 * px} fontFamily="inherit" fontWeight="600" fill={look === 'other' ? SCREEN.ink2 : ink}>
+      <g
+        fontSize={12 * px}
+        fontFamily="inherit"
+        fontWeight="600"
+        fill={look === 'other' ? SCREEN.ink2 : ink}
+        stroke={SCREEN.sheet}
+        strokeWidth={3 * px}
+        paintOrder="stroke"
+      >
         <text x={begins.x - 8 * px} y={begins.y + 4 * px} textAnchor="end">
           {name} −
         </text>

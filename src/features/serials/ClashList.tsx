@@ -41,11 +41,13 @@ function Clash({
   const [reason, setReason] = useState('');
   const [fault, setFault] = useState<string | null>(null);
   return (
-    <li role="alert" className="border border-rust bg-rust-wash p-4 text-[15px] text-rust-ink">
-      <p className="font-medium">
-        {entry.serial ?? 'Empty'} at {place} was not kept.
-      </p>
-      <p>{entry.clash?.message}</p>
+    <li className="border border-rust bg-rust-wash p-4 text-[15px] text-rust-ink">
+      <div role="alert">
+        <p className="font-medium">
+          {entry.serial ?? 'Empty'} at {place} was not kept.
+        </p>
+        <p>{entry.clash?.message}</p>
+      </div>
       {entry.clash?.kind !== 'other' && (
         <Field
           className="mt-3 text-ink"
