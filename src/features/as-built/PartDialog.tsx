@@ -4,6 +4,7 @@ import { Button } from '../../components/ui/Button';
 import { Dialog } from '../../components/ui/Dialog';
 import { Field } from '../../components/ui/Field';
 import { Notice } from '../../components/ui/Notice';
+import { countUp } from '../../domain/commissioning/as-built/count-up';
 import { PART_DEFAULTS, PART_WORDS, type PartKind } from '../../domain/commissioning/as-built/parts';
 import { ApiError } from '../../lib/api';
 import { queryClient } from '../../lib/query-client';
@@ -37,7 +38,7 @@ const newOne = (built: AsBuilt, { kind, from }: Editing): PartValues => ({
   ...from,
 });
 
-/** Where there is only one to choose, it is chosen. */
+/** Where there is only one to choose, it is chosen; a string begins as the one before it. */
 function onlyChoices(built: AsBuilt, kind: PartKind): PartValues {
   const one = <T extends { id: string; archived?: boolean }>(list: readonly T[]): string | null => {
     const offered = list.filter((p) => !p.archived);
@@ -46,6 +47,14 @@ function onlyChoices(built: AsBuilt, kind: PartKind): PartValues {
   if (kind === 'zone') return { initiator: one(built.initiators) };
   if (kind === 'transmitter') return { zone: one(built.zones) };
   if (kind === 'sensor') return { logger: one(built.loggers), plane: one(built.planes) };
+  const last = built.strings.at(-1);
+  if (kind === 'string' && last) {
+    const [, next = ''] = countUp(last.name, 2);
+    return {
+      ...partOf(built, 'string', last.id),
+      name: built.strings.some((s) => s.name === next) ? '' : next,
+    };
+  }
   if (kind === 'string')
     return {
       plane: one(built.planes),
@@ -192,6 +201,7 @@ export function PartDialog({ built, editing, timeZones, onClose, onSaved }: Prop
             form={form}
             faults={faults}
             timeZones={timeZones}
+            adding={id === null}
             onChange={change}
           />
           {kind === 'string' && id === null && (

@@ -14,6 +14,8 @@ interface Props {
   form: Form;
   faults: Faults;
   timeZones: readonly string[];
+  /** A new part, not an edit. */
+  adding?: boolean;
   /** Left out here: shown elsewhere. */
   without?: readonly string[];
   only?: readonly string[];
@@ -42,6 +44,7 @@ function OneField({
   form,
   faults,
   timeZones,
+  adding = false,
   onChange,
 }: Omit<Props, 'kind' | 'without' | 'only'> & { field: PartField }) {
   const value = form[field.key];
@@ -90,13 +93,15 @@ function OneField({
       );
     case 'part': {
       const options = parts ? namedOptions(parts, field.of, text === '' ? [] : [text]) : [];
-      const none = field.optional ? (field.none ?? 'None') : 'Choose …';
+      // a new string has one module type; several are what single slots were given since
+      const several = field.key === 'moduleType';
+      const none = field.optional && !(several && adding) ? (field.none ?? 'None') : 'Choose …';
       return (
         <SelectField
           {...common}
           name={field.key}
           options={[
-            ...(field.optional || text === '' ? [{ value: '', label: none }] : []),
+            ...((field.optional && !several) || text === '' ? [{ value: '', label: none }] : []),
             ...options.map((o) => ({ value: o.id, label: o.name })),
           ]}
           value={text}

@@ -15,60 +15,54 @@ export async function lockAsBuilt(tx: Tx, siteIds: readonly number[]): Promise<v
   ]);
 }
 
-/** The named slots of a site as they stand, by slotKey. */
+/**
+ * The named slots of a site as they stand, by slotKey. In three plain statements that are put together here: a planner
+ * without statistics, as after a large import, has no joins to get wrong.
+ */
 export async function standingSlots(
   tx: Tx,
   siteId: number,
   slots: readonly { string: string; position: number }[],
 ): Promise<Map<string, StandingSlot>> {
-  const { rows } = await tx.raw<{
-    rows: {
-      string: string;
-      slotId: number;
-      stringId: number;
-      stringName: string;
-      position: number;
-      unitTypeId: number;
-      unitTypeName: string;
-      placementId: number | null;
-      unitId: number | null;
-      serial: string | null;
-      sinceMs: number;
-    }[];
+  const wanted = new Set(slots.map((s) => slotKey(s.string, s.position)));
+  const { rows: all } = await tx.raw<{
+    rows: (Omit<StandingSlot, 'unit' | 'sinceMs'> & { string: string })[];
   }>(
-    `with wanted as (
-       select distinct string, position from unnest(:strings::uuid[], :positions::int4[]) w(string, position))
-     select s.ref as string, slot.id as "slotId", s.id as "stringId", s.name as "stringName", slot.position,
-            s.unit_type_id as "unitTypeId", t.name as "unitTypeName",
-            p.id as "placementId", u.id as "unitId", u.serial,
-            coalesce((extract(epoch from greatest(p.placed_from, ended.at)) * 1000)::float8, 0) as "sinceMs"
-     from wanted w
-     join string s on s.ref = w.string and s.site_id = :siteId
-     join slot on slot.string_id = s.id and slot.position = w.position
-     join unit_type t on t.id = s.unit_type_id
-     left join placement p on p.slot_id = slot.id and p.placed_to is null
-     left join unit u on u.id = p.unit_id
-     left join (select slot_id, max(placed_to) as at from placement where site_id = :siteId group by slot_id) ended
-       on ended.slot_id = slot.id`,
-    { siteId, strings: slots.map((s) => s.string), positions: slots.map((s) => s.position) },
+    `select s.ref as string, slot.id as "slotId", s.id as "stringId", s.name as "stringName", slot.position,
+            s.unit_type_id as "unitTypeId", t.name as "unitTypeName"
+     from string s join slot on slot.string_id = s.id join unit_type t on t.id = s.unit_type_id
+     where s.site_id = ? and s.ref = any (?::uuid[])`,
+    [siteId, [...new Set(slots.map((s) => s.string))]],
   );
+  const rows = all.filter((r) => wanted.has(slotKey(r.string, r.position)));
+  const ids = rows.map((r) => r.slotId);
+  const { rows: units } = await tx.raw<{
+    rows: { slotId: number; placementId: number; unitId: number; serial: string; sinceMs: number }[];
+  }>(
+    `select p.slot_id as "slotId", p.id as "placementId", u.id as "unitId", u.serial,
+            (extract(epoch from p.placed_from) * 1000)::float8 as "sinceMs"
+     from placement p join unit u on u.id = p.unit_id where p.slot_id = any (?::int4[]) and p.placed_to is null`,
+    [ids],
+  );
+  const { rows: ended } = await tx.raw<{ rows: { id: number; sinceMs: number }[] }>(
+    `select slot_id as id, (extract(epoch from max(placed_to)) * 1000)::float8 as "sinceMs"
+     from placement where slot_id = any (?::int4[]) and placed_to is not null group by slot_id`,
+    [ids],
+  );
+  const unitOf = new Map(units.map((u) => [u.slotId, u]));
+  const endedOf = new Map(ended.map((e) => [e.id, e.sinceMs]));
   return new Map(
-    rows.map((r) => [
-      slotKey(r.string, r.position),
-      {
-        slotId: r.slotId,
-        stringId: r.stringId,
-        stringName: r.stringName,
-        position: r.position,
-        unitTypeId: r.unitTypeId,
-        unitTypeName: r.unitTypeName,
-        unit:
-          r.placementId !== null && r.unitId !== null && r.serial !== null
-            ? { placementId: r.placementId, unitId: r.unitId, serial: r.serial }
-            : null,
-        sinceMs: r.sinceMs,
-      },
-    ]),
+    rows.map(({ string, ...slot }) => {
+      const sits = unitOf.get(slot.slotId);
+      return [
+        slotKey(string, slot.position),
+        {
+          ...slot,
+          unit: sits ? { placementId: sits.placementId, unitId: sits.unitId, serial: sits.serial } : null,
+          sinceMs: Math.max(sits?.sinceMs ?? 0, endedOf.get(slot.slotId) ?? 0),
+        },
+      ];
+    }),
   );
 }
 
@@ -95,62 +89,59 @@ export async function knownUnits(
   serials: readonly string[],
 ): Promise<Map<string, KnownUnit>> {
   if (serials.length === 0) return new Map();
-  const { rows } = await tx.raw<{
-    rows: {
-      unitId: number;
-      serial: string;
-      unitTypeId: number;
-      unitTypeName: string;
-      placementId: number | null;
-      slotId: number | null;
-      siteId: number | null;
-      siteName: string | null;
-      stringId: number | null;
-      stringName: string | null;
-      position: number | null;
-      sinceMs: number;
-    }[];
+  const { rows: units } = await tx.raw<{ rows: Omit<KnownUnit, 'sits' | 'sinceMs'>[] }>(
+    `select u.id as "unitId", u.serial, u.unit_type_id as "unitTypeId", t.name as "unitTypeName"
+     from unit u join unit_type t on t.id = u.unit_type_id
+     where u.organisation_id = ? and u.serial = any (?::text[])`,
+    [organisationId, [...serials]],
+  );
+  const ids = units.map((u) => u.unitId);
+  const { rows: placed } = await tx.raw<{
+    rows: (NonNullable<KnownUnit['sits']> & { unitId: number; sinceMs: number; seen: boolean })[];
   }>(
-    `select u.id as "unitId", u.serial, u.unit_type_id as "unitTypeId", t.name as "unitTypeName",
-            p.id as "placementId", seen.slot_id as "slotId", seen.site_id as "siteId", seen.site as "siteName",
-            seen.string_id as "stringId", seen.string as "stringName", seen.position,
-            coalesce((extract(epoch from greatest(p.placed_from, ended.at)) * 1000)::float8, 0) as "sinceMs"
-     from unit u
-     join unit_type t on t.id = u.unit_type_id
-     -- unit by unit: thousands that have just been placed are not in the planner's statistics yet
-     left join lateral (select p.id, p.slot_id, p.placed_from from placement p
-                        where p.unit_id = u.id and p.placed_to is null limit 1) p on true
-     left join lateral (select slot.id as slot_id, slot.position, s.id as string_id, s.name as string, site.id as site_id, site.name as site
-                        from slot join string s on s.id = slot.string_id join site on site.id = slot.site_id
-                        where slot.id = p.slot_id and ${SITE_VISIBLE} limit 1) seen on true
-     left join lateral (select max(e.placed_to) as at from placement e where e.unit_id = u.id) ended on true
-     where u.organisation_id = :organisationId and u.serial = any (:serials::text[])`,
-    { organisationId, serials: [...serials] },
+    `select p.unit_id as "unitId", p.id as "placementId", p.slot_id as "slotId", p.site_id as "siteId",
+            site.name as "siteName", s.id as "stringId", s.name as "stringName", slot.position,
+            (extract(epoch from p.placed_from) * 1000)::float8 as "sinceMs", coalesce(${SITE_VISIBLE}, false) as seen
+     from placement p
+     left join slot on slot.id = p.slot_id left join string s on s.id = slot.string_id left join site on site.id = p.site_id
+     where p.unit_id = any (?::int4[]) and p.placed_to is null`,
+    [ids],
   );
+  const { rows: ended } = await tx.raw<{ rows: { id: number; sinceMs: number }[] }>(
+    `select unit_id as id, (extract(epoch from max(placed_to)) * 1000)::float8 as "sinceMs"
+     from placement where unit_id = any (?::int4[]) and placed_to is not null group by unit_id`,
+    [ids],
+  );
+  const placedOf = new Map(placed.map((p) => [p.unitId, p]));
+  const endedOf = new Map(ended.map((e) => [e.id, e.sinceMs]));
   return new Map(
-    rows.map((r) => [
-      r.serial,
-      {
-        unitId: r.unitId,
-        serial: r.serial,
-        unitTypeId: r.unitTypeId,
-        unitTypeName: r.unitTypeName,
-        sits:
-          r.placementId === null
-            ? null
-            : {
-                placementId: r.placementId,
-                slotId: r.slotId,
-                siteId: r.siteId,
-                siteName: r.siteName,
-                stringId: r.stringId,
-                stringName: r.stringName,
-                position: r.position,
-              },
-        sinceMs: r.sinceMs,
-      },
-    ]),
+    units.map((unit) => {
+      const place = placedOf.get(unit.unitId);
+      return [
+        unit.serial,
+        {
+          ...unit,
+          sits: place ? sitsOf(place) : null,
+          sinceMs: Math.max(place?.sinceMs ?? 0, endedOf.get(unit.unitId) ?? 0),
+        },
+      ];
+    }),
   );
+}
+
+function sitsOf(place: NonNullable<KnownUnit['sits']> & { seen: boolean }): NonNullable<KnownUnit['sits']> {
+  const { placementId, slotId, siteId, siteName, stringId, stringName, position } = place;
+  return place.seen
+    ? { placementId, slotId, siteId, siteName, stringId, stringName, position }
+    : {
+        placementId,
+        slotId: null,
+        siteId: null,
+        siteName: null,
+        stringId: null,
+        stringName: null,
+        position: null,
+      };
 }
 
 export async function retypeUnits(
