@@ -1,5 +1,6 @@
 import { randomUUID } from 'node:crypto';
 import { get, type Route, type Target } from './route';
+import { AS_BUILT_ROUTES } from './routes-as-built';
 import { DESIGN_AND_EQUIPMENT } from './routes-equipment';
 import { IMPORT_SERIALS_ROOF } from './routes-import';
 import { HANDOVER } from './routes-handover';
@@ -9,6 +10,7 @@ export type { Route, Target } from './route';
 
 /** Every route of the product. A file under src/pages that is not here fails the matrix. */
 export const ROUTES: readonly Route[] = [
+  ...AS_BUILT_ROUTES,
   ...DESIGN_AND_EQUIPMENT,
   ...IMPORT_SERIALS_ROOF,
   ...HANDOVER,
@@ -27,19 +29,6 @@ export const ROUTES: readonly Route[] = [
     'roll_call.read',
     'site',
     (t) => `/commissioning/${t.site}/roll-call`,
-  ),
-  get('commissioning/new.astro', 'as_built.write', 'nothing', () => '/commissioning/new'),
-  get(
-    'commissioning/[site]/as-built.astro',
-    'as_built.read',
-    'site',
-    (t) => `/commissioning/${t.site}/as-built`,
-  ),
-  get(
-    'commissioning/[site]/history.astro',
-    'as_built.read',
-    'site',
-    (t) => `/commissioning/${t.site}/history`,
   ),
   get('commissioning/[site]/walk.astro', 'site.read', 'site', (t) => `/commissioning/${t.site}/walk`),
   get(
@@ -277,79 +266,6 @@ export const ROUTES: readonly Route[] = [
     path: (t) => `/api/strings/${t.string}/sign-off`,
     body: { ref: '00000000-0000-4000-8000-000000000003', fingerprint: '0'.repeat(64) },
     served: [409],
-  },
-  {
-    file: 'api/sites/index.ts',
-    method: 'POST',
-    permission: 'as_built.write',
-    of: 'nothing',
-    path: () => '/api/sites',
-    body: { values: {} },
-    served: [422],
-  },
-  get('api/sites/[site]/as-built/index.ts', 'as_built.read', 'site', (t) => `/api/sites/${t.site}/as-built`),
-  get(
-    'api/sites/[site]/as-built.csv.ts',
-    'telemetry.export',
-    'site',
-    (t) => `/api/sites/${t.site}/as-built.csv`,
-  ),
-  get(
-    'api/sites/[site]/as-built/history.ts',
-    'as_built.read',
-    'site',
-    (t) => `/api/sites/${t.site}/as-built/history?find=4E02-77A1`,
-  ),
-  get(
-    'api/sites/[site]/as-built/history.csv.ts',
-    'telemetry.export',
-    'site',
-    (t) => `/api/sites/${t.site}/as-built/history.csv`,
-  ),
-  {
-    file: 'api/sites/[site]/as-built/parts/index.ts',
-    method: 'POST',
-    permission: 'as_built.write',
-    of: 'site',
-    path: (t) => `/api/sites/${t.site}/as-built/parts`,
-    body: { kind: 'plane', values: {} },
-    served: [422],
-  },
-  {
-    file: 'api/sites/[site]/as-built/parts/[part].ts',
-    method: 'PATCH',
-    permission: 'as_built.write',
-    of: 'string',
-    path: (t) => `/api/sites/${t.site}/as-built/parts/${t.string}`,
-    body: { kind: 'string', before: { cableResistance: 1 }, after: { cableResistance: 1 } },
-    served: [204],
-  },
-  {
-    file: 'api/sites/[site]/as-built/parts/[part].ts',
-    method: 'DELETE',
-    permission: 'as_built.write',
-    of: 'string',
-    path: (t) => `/api/sites/${t.site}/as-built/parts/${t.string}`,
-    body: { kind: 'string' }, // its units are placed, and no reason is given
-    served: [422, 409],
-  },
-  {
-    file: 'api/sites/[site]/as-built/loggers/[logger]/token.ts',
-    method: 'POST',
-    permission: 'as_built.write',
-    of: 'site',
-    path: (t) => `/api/sites/${t.site}/as-built/loggers/${t.string}/token`,
-    body: {},
-    served: [404], // no logger has a string's identifier
-  },
-  {
-    file: 'api/sites/[site]/placements.ts',
-    method: 'POST',
-    permission: 'as_built.write',
-    of: 'site',
-    path: (t) => `/api/sites/${t.site}/placements`,
-    body: { changes: [] },
-    served: [200],
   },
   // shutdown tests: there is none in the matrix's fleet
   get(
