@@ -9,7 +9,9 @@ interface Props {
   marks: readonly { label: string; voltage: number; current: number }[];
   /** current: I–V; power: P–V. */
   show: 'current' | 'power';
-  /** What a line is called at its end. */
+  /** Where the lines are named: beside their beginnings, over their peaks, or one below the other where they fall. */
+  labels: LabelPlace;
+  /** What a line is called. */
   labelOf: (line: ModuleLine) => string;
   /** Drawn heavier: the line at STC. */
   isMain: (line: ModuleLine) => boolean;
@@ -19,11 +21,24 @@ interface Props {
   paint?: Paint;
 }
 
+type LabelPlace = 'at_short_circuit' | 'at_peak' | 'on_the_fall';
+
+/** The point of a line that its name stands at; of several lines that fall side by side each a step lower. */
+function labelPlace(line: ModuleLine, place: LabelPlace, i: number): { voltage: number; current: number } {
+  const peak = { voltage: line.vmp, current: line.imp };
+  if (place === 'at_peak') return peak;
+  const first = line.points[0] ?? peak;
+  if (place === 'at_short_circuit') return first;
+  const wanted = first.current * (0.72 - 0.17 * i);
+  return line.points.find((p) => p.current <= wanted) ?? peak;
+}
+
 /** A module's current or power over its voltage; where the datasheet has a point, a ring. */
 export function ModuleCurve({
   lines,
   marks,
   show,
+  labels,
   labelOf,
   isMain,
   label,
@@ -82,18 +97,20 @@ export function ModuleCurve({
           strokeLinejoin="round"
         />
       ))}
-      {lines.map((line) => {
-        const at = { voltage: line.vmp, current: line.imp };
-        const first = line.points[0];
-        const beside = show === 'current' && first ? first : at;
+      {lines.map((line, i) => {
+        const at = labelPlace(line, labels, i);
         return (
           <text
             key={labelOf(line)}
-            x={show === 'current' ? plot.left + 8 : x(beside.voltage) - 4}
-            y={y(yOf(beside)) + (show === 'current' ? 14 : -7)}
-            textAnchor={show === 'current' ? 'start' : 'end'}
+            x={x(at.voltage) + (labels === 'at_short_circuit' ? 8 : 0)}
+            y={y(yOf(at)) + (labels === 'at_short_circuit' ? 14 : labels === 'at_peak' ? -7 : 4)}
+            textAnchor={labels === 'at_short_circuit' ? 'start' : 'middle'}
             {...text}
             fill={isMain(line) ? paint.petrol : paint.ink2}
+            stroke={paint.sheet}
+            strokeWidth="4"
+            strokeLinejoin="round"
+            paintOrder="stroke"
           >
             {labelOf(line)}
           </text>

@@ -130,10 +130,21 @@ export function readRow(
       );
       continue;
     }
+    if (typed === '' && field.kind === 'text' && !field.optional) {
+      fault('The cell is empty.', 'Fill it in: every type needs one.');
+      continue;
+    }
     const choice =
       field.kind === 'choice'
         ? field.options.find((o) => [plain(o.value), plain(o.label)].includes(plain(typed)))?.value
         : undefined;
+    if (field.kind === 'choice' && choice === undefined) {
+      fault(
+        typed === '' ? 'The cell is empty.' : `"${typed}" is none of the words of this column.`,
+        `Write one of: ${field.options.map((o) => o.label).join('; ')}.`,
+      );
+      continue;
+    }
     const read = readValue(field, choice ?? typed);
     if ('fault' in read) {
       const { why, remedy } = inTwo(field.label, read.fault);

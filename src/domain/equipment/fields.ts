@@ -48,7 +48,7 @@ export const NAME_FIELD: TextField = {
   key: 'name',
   column: 'name',
   label: 'Name',
-  group: 'Name',
+  group: 'Type',
   longest: 80,
   hint: 'As your people call it. An import finds the entry by it.',
 };

@@ -20,8 +20,8 @@ export const UNIT_FIELDS: readonly Field[] = [
     key: 'kind',
     column: 'kind',
     label: 'Kind',
-    group: 'Name',
-    hint: 'Choosing one fills the form with what is usual for it; every value can be changed.',
+    group: 'Type',
+    hint: 'A preset: in a new type it fills the form with what is usual. Every value can be changed.',
     options: UNIT_KINDS.map((value) => ({ value, label: KIND_WORDS[value] })),
   },
   {

@@ -45,6 +45,11 @@ const COLUMNS: Column<SiteDesignItem>[] = [
         </div>
         <p className="font-medium">{CHECK_WORDS[f.check]}</p>
         <p className="text-sm text-ink-2">{stringsInShort(f.strings)}</p>
+        {f.limit !== null && (
+          <p className="sm:hidden">
+            {figure(f.value, f.unit)} <span className="text-ink-2">against {figure(f.limit, f.unit)}</span>
+          </p>
+        )}
         <div className="mt-1 lg:hidden">
           <Found finding={f} />
         </div>

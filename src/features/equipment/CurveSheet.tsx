@@ -4,7 +4,6 @@ import { Segmented } from '../../components/ui/Segmented';
 import { Sheet } from '../../components/ui/Sheet';
 import { Table } from '../../components/ui/Table';
 import { Tag } from '../../components/ui/Tag';
-import type { Entry } from '../../domain/equipment/fields';
 import {
   CONDITIONS,
   moduleLine,
@@ -14,23 +13,31 @@ import {
 } from '../../drawings/module-curve';
 import { ModuleCurve } from '../../drawings/ModuleCurve';
 import { irradiance, number, percent, power, celsius } from '../../drawings/numbers';
+import { curveEntry, curveMissing, type FormReading } from './form';
 import { fitOf, type FitLine, type ModuleFit } from './fit';
-
-interface Props {
-  /** null: the datasheet isn't whole yet. */
-  entry: Entry | null;
-  faults: Readonly<Record<string, string>>;
-}
 
 const SWEEPS = [
   { value: 'light', label: 'Less light' },
   { value: 'temperature', label: 'Warmer cells' },
 ] as const;
-const QUALITY = { good: 'Fits well', fair: 'Fits', poor: 'Does not fit' } as const;
-const SHAPE = { good: '✓', fair: '≈', poor: '×' } as const;
+const VERDICT = {
+  good: { tone: 'petrol', shape: '✓', word: 'Fits well' },
+  remarked: { tone: 'rust', shape: '≠', word: 'Points fit, coefficients don’t' },
+  fair: { tone: 'petrol', shape: '≈', word: 'Fits' },
+  poor: { tone: 'rust', shape: '×', word: 'Does not fit' },
+} as const;
 
 const labelOf = (sweep: CurveSweep) => (line: ModuleLine) =>
   sweep === 'light' ? irradiance(line.poaGlobal) : celsius(line.temperatureCell);
+const PLOTS = [
+  { show: 'current', heights: [300, 240] },
+  { show: 'power', heights: [260, 220] },
+] as const;
+/** Drawn for a desk and for a phone, so that its words are 12 px on both. */
+const WIDTHS = [
+  { width: 560, className: 'hidden sm:block' },
+  { width: 340, className: 'sm:hidden' },
+] as const;
 const isMain = (line: ModuleLine) => line.poaGlobal === 1000 && line.temperatureCell === 25;
 
 /** What stands out: far off what the fit can forgive. */
@@ -38,9 +45,12 @@ const standsOut = (line: FitLine): boolean =>
   Math.abs(line.off) > (line.label.endsWith('per K') ? (line.role === 'follows' ? 0.15 : 0.05) : 0.005);
 
 /** The curve that a datasheet gives, drawn while it is typed, and how far it is from each printed figure. */
-export function CurveSheet({ entry, faults }: Props) {
+export function CurveSheet({ reading }: { reading: FormReading }) {
   const [sweep, setSweep] = useState<CurveSweep>('light');
-  const fit = useMemo((): ModuleFit | null => (entry ? fitOf(entry) : null), [entry]);
+  const fit = useMemo((): ModuleFit | null => {
+    const entry = curveEntry(reading);
+    return entry && fitOf(entry);
+  }, [reading]);
   const lines = useMemo(
     () => (fit ? CONDITIONS[sweep].map((c) => moduleLine(fit.fitted.parameters, c)) : []),
     [fit, sweep],
@@ -48,14 +58,15 @@ export function CurveSheet({ entry, faults }: Props) {
   if (!fit)
     return (
       <Sheet title="The curve of this sheet" id="curve" className="lg:sticky lg:top-4">
-        <Notice kind="empty" title="The curve appears when the sheet is whole">
-          {Object.keys(faults).length > 0
-            ? `${Object.keys(faults).length} values are missing or can’t be.`
-            : 'Type the values on the left.'}
+        <Notice kind="empty" title="The curve appears when its figures are there">
+          {curveMissing(reading) > 0
+            ? `${curveMissing(reading)} of them are missing or can’t be: the four points, the three coefficients and the cells.`
+            : 'The points can’t be of one module: see the marked field.'}
         </Notice>
       </Sheet>
     );
-  const { quality, remarks } = fit.fitted.fit;
+  const { remarks } = fit;
+  const verdict = VERDICT[fit.verdict];
   const main = lines.find(isMain);
   return (
     <Sheet
@@ -63,8 +74,8 @@ export function CurveSheet({ entry, faults }: Props) {
       id="curve"
       className="lg:sticky lg:top-4"
       aside={
-        <Tag tone={quality === 'poor' ? 'rust' : 'petrol'} shape={SHAPE[quality]}>
-          {QUALITY[quality]}
+        <Tag tone={verdict.tone} shape={verdict.shape}>
+          {verdict.word}
         </Tag>
       }
     >
@@ -79,23 +90,29 @@ export function CurveSheet({ entry, faults }: Props) {
         </ul>
       )}
       <Segmented label="Conditions" name="conditions" options={SWEEPS} value={sweep} onChange={setSweep} />
-      <ModuleCurve
-        lines={lines}
-        marks={sheetPoints(fit.sheet)}
-        show="current"
-        labelOf={labelOf(sweep)}
-        isMain={isMain}
-        label={`Current over voltage, ${sweep === 'light' ? 'at 1000 to 200 W/m² and 25 °C' : 'at 0 to 75 °C and 1000 W/m²'}; rings are the datasheet’s points`}
-      />
-      <ModuleCurve
-        lines={lines}
-        marks={sheetPoints(fit.sheet).slice(1, 2)}
-        show="power"
-        labelOf={labelOf(sweep)}
-        isMain={isMain}
-        height={260}
-        label={`Power over voltage under the same conditions${main ? `; ${power(main.pmp)} at STC` : ''}`}
-      />
+      {PLOTS.map(({ show, heights }) =>
+        WIDTHS.map(({ width, className }, i) => (
+          <div key={`${show} ${width}`} className={className}>
+            <ModuleCurve
+              lines={lines}
+              marks={show === 'current' ? sheetPoints(fit.sheet) : sheetPoints(fit.sheet).slice(1, 2)}
+              show={show}
+              labels={
+                sweep === 'temperature' ? 'on_the_fall' : show === 'current' ? 'at_short_circuit' : 'at_peak'
+              }
+              labelOf={sweep === 'light' && show === 'power' ? (line) => power(line.pmp) : labelOf(sweep)}
+              isMain={isMain}
+              width={width}
+              height={heights[i] ?? 260}
+              label={
+                show === 'current'
+                  ? `Current over voltage, ${sweep === 'light' ? 'at 1000 to 200 W/m² and 25 °C' : 'at 0 to 75 °C and 1000 W/m²'}; rings are the datasheet’s points`
+                  : `Power over voltage under the same conditions${main ? `; ${power(main.pmp)} at STC` : ''}`
+              }
+            />
+          </div>
+        )),
+      )}
       <Table
         caption="Each printed figure beside the one that the curve has"
         rows={fit.lines}

@@ -193,9 +193,7 @@ export function ImportPage({ family }: { family: EquipmentFamily }) {
               {busy && <span role="status">Every row is being read…</span>}
             </div>
             <details className="mt-4 text-ink-2">
-              <summary className="target flex cursor-pointer items-center">
-                Columns that are understood
-              </summary>
+              <summary className="target cursor-pointer py-3">Columns that are understood</summary>
               <p>
                 {FIELDS[family].map(headerOf).join(' · ')}. Decimal points or commas; separated by comma,
                 semicolon or tab. Columns that a type has already may be left out.

@@ -59,11 +59,6 @@ export function PairsSheet({ pairs, connectors, mayRecord, timeZone }: Props) {
                 <span className="font-medium">
                   {p.first.name} with {p.second.name}
                 </span>
-                {p.endedAt && (
-                  <span className="ml-2">
-                    <Tag tone="slate">Ended {fullTime(p.endedAt, timeZone)}</Tag>
-                  </span>
-                )}
                 <span className="block text-sm text-ink-2 md:hidden">{p.evidence}</span>
               </>
             ),
@@ -95,15 +90,23 @@ export function PairsSheet({ pairs, connectors, mayRecord, timeZone }: Props) {
             ),
           },
           {
-            key: 'end',
-            label: '',
-            className: 'text-right',
+            key: 'state',
+            label: 'State',
+            className: 'text-right sm:text-left',
             cell: (p) =>
-              mayRecord &&
-              !p.endedAt && (
-                <Button className="!px-3 !text-sm" onClick={() => setEnding(p)}>
-                  End
-                </Button>
+              p.endedAt ? (
+                <Tag tone="slate" title={fullTime(p.endedAt, timeZone)}>
+                  Ended
+                </Tag>
+              ) : (
+                <span className="inline-flex flex-wrap items-center justify-end gap-x-3 gap-y-1">
+                  In force
+                  {mayRecord && (
+                    <Button className="!px-3 !text-sm" onClick={() => setEnding(p)}>
+                      End
+                    </Button>
+                  )}
+                </span>
               ),
           },
         ]}

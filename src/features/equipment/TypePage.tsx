@@ -74,7 +74,7 @@ export function TypePage({ family, item: start, connectors, mayWrite, changed }:
         className={
           family === 'modules'
             ? 'grid items-start gap-5 lg:grid-cols-[minmax(0,1fr)_minmax(0,1fr)]'
-            : 'max-w-[860px]'
+            : 'grid max-w-[860px] gap-5'
         }
       >
         <div className="grid gap-5">
@@ -97,12 +97,18 @@ export function TypePage({ family, item: start, connectors, mayWrite, changed }:
               </div>
             </Sheet>
           ))}
-          {mayWrite && <Doubts form={form} />}
-          {mayWrite && (
-            <SavePanel form={form} family={family} name={name} onSave={(version) => void submit(version)} />
-          )}
         </div>
-        {family === 'modules' && <CurveSheet entry={form.drawn} faults={form.reading.faults} />}
+        {family === 'modules' && (
+          <div className="min-w-0 lg:col-start-2 lg:row-span-2 lg:row-start-1 lg:h-full">
+            <CurveSheet reading={form.deferred} />
+          </div>
+        )}
+        {mayWrite && (
+          <div className="grid gap-5">
+            <Doubts form={form} />
+            <SavePanel form={form} family={family} name={name} onSave={(version) => void submit(version)} />
+          </div>
+        )}
       </form>
     </>
   );

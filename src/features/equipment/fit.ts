@@ -19,10 +19,15 @@ export interface ModuleFit {
   lines: FitLine[];
   /** One sentence: how well the curve meets the sheet. */
   words: string;
+  /** good: nothing stands out; remarked: the points are met, and something that follows is not. */
+  verdict: 'good' | 'remarked' | 'fair' | 'poor';
+  /** What stands out, in the words of the table. */
+  remarks: string[];
 }
 
 const WORDS = {
   good: 'One module can have all of these values: the curve meets the sheet.',
+  remarked: 'The curve meets the points of the sheet, but what follows from it differs:',
   fair: 'The curve comes close to the sheet; the small differences are usual for rounded figures.',
   poor: 'No single module has all of these values: check the marked ones against the sheet.',
 } as const;
@@ -46,10 +51,19 @@ export function fitOf(entry: Entry): ModuleFit {
     off,
     role,
   });
+  const remarks = fit.remarks.map((r) =>
+    r
+      .replace('gammaPmp', 'pmp per K')
+      .replace('betaVoc', 'voc per K')
+      .replace(/(^| )-(?=\d)/g, '$1−'),
+  );
+  const verdict = fit.quality === 'good' && remarks.length > 0 ? 'remarked' : fit.quality;
   return {
     sheet,
     fitted,
-    words: WORDS[fit.quality],
+    verdict,
+    remarks,
+    words: WORDS[verdict],
     lines: [
       line('voc', sheet.vocRef, fit.voc, 'met exactly', 'V', 2),
       line('isc', sheet.iscRef, fit.isc, 'met exactly', 'A', 2),

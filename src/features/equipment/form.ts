@@ -28,6 +28,8 @@ export const formOf = (family: EquipmentFamily, entry: Entry): FormState => ({
 export interface FormReading {
   /** The whole entry, where nothing is missing or contradicts. */
   entry: Entry | null;
+  /** Every field that could be read, each by itself. */
+  partial: Entry;
   faults: Readonly<Record<string, string>>;
   doubts: readonly Doubt[];
 }
@@ -35,16 +37,50 @@ export interface FormReading {
 /** What a form says so far: every fault, and what is unusual once nothing is wrong. */
 export function readForm(family: EquipmentFamily, typed: TypedEntry): FormReading {
   const { entry, faults } = readEntry(family, typed);
-  if (Object.keys(faults).length > 0) return { entry: null, faults, doubts: [] };
+  if (Object.keys(faults).length > 0) return { entry: null, partial: entry, faults, doubts: [] };
   const { conflicts, doubts } = judgeEntry(family, entry);
   if (conflicts.length > 0)
     return {
       entry: null,
+      partial: entry,
       faults: Object.fromEntries(conflicts.map((c) => [c.field, c.message])),
       doubts: [],
     };
-  return { entry, faults: {}, doubts };
+  return { entry, partial: entry, faults: {}, doubts };
 }
+
+/** What a module's curve needs; the rest of its sheet may still be missing. */
+const CURVE_KEYS = [
+  'vocRef',
+  'iscRef',
+  'vmpRef',
+  'impRef',
+  'betaVoc',
+  'alphaIsc',
+  'gammaPmp',
+  'cellsInSeries',
+  'bypassGroups',
+  'noct',
+];
+const BESIDE_CURVE: Entry = {
+  name: '',
+  lengthM: 1,
+  widthM: 1,
+  voltageSystemMax: 1000,
+  fuseMax: 20,
+  connector: null,
+};
+
+/** A module as far as its curve goes; null while a figure of the curve is missing or can't be. */
+export function curveEntry({ partial }: FormReading): Entry | null {
+  if (CURVE_KEYS.some((key) => partial[key] === undefined)) return null;
+  const entry = { ...BESIDE_CURVE, ...partial };
+  return judgeEntry('modules', entry).conflicts.length > 0 ? null : entry;
+}
+
+/** How many figures of the curve are still missing or wrong. */
+export const curveMissing = ({ partial, faults }: FormReading): number =>
+  CURVE_KEYS.filter((key) => partial[key] === undefined || faults[key] !== undefined).length;
 
 /**
  * A field as changed. Choosing the kind of a new unit fills everything but the name and the connectors with what is

@@ -2,7 +2,7 @@ import type { Column } from '../../components/ui/Table';
 import { Tag } from '../../components/ui/Tag';
 import { KIND_WORDS } from '../../domain/equipment/unit-fields';
 import type { UnitKind } from '../../domain/equipment/unit-type';
-import { amperes, number, power, quantity } from '../../drawings/numbers';
+import { amperes, counted, number, power, quantity } from '../../drawings/numbers';
 import type { Catalogue, CatalogueItem } from '../../schemas/api/equipment';
 import { paths } from '../../schemas/paths';
 import { connectorNamesOf, nameOf } from './list';
@@ -132,16 +132,16 @@ export function listColumns(catalogue: Catalogue): Column<Row>[] {
       sortable: true,
       cell: (row) => (
         <span className={row.strings + row.types > 0 ? '' : 'text-ink-2'}>
-          {row.types > 0 && <span className="block sm:inline">{row.types} types </span>}
-          {row.strings > 0 ? (
-            <>
-              {number(row.strings)}
-              <span className="hidden sm:inline"> strings</span>{' '}
-              <span className="sr-only sm:hidden">strings</span>
-            </>
-          ) : row.types > 0 ? null : (
-            '–'
-          )}
+          <span aria-hidden="true">
+            {row.types > 0 && (
+              <span className="block sm:inline">
+                {counted(row.types, 'type')}
+                {row.strings > 0 && <span className="hidden sm:inline">, </span>}
+              </span>
+            )}
+            {row.strings > 0 && counted(row.strings, 'string')}
+            {row.strings + row.types === 0 && '–'}
+          </span>
           <span className="sr-only">{usedWords(row)}</span>
         </span>
       ),

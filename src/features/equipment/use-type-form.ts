@@ -126,7 +126,7 @@ export function useTypeForm(family: EquipmentFamily, start: CatalogueItem | null
     state,
     reading,
     /** As `reading`, a moment behind while typing: for what takes long to draw. */
-    drawn: deferred.entry,
+    deferred,
     dirty,
     open,
     saving,
