@@ -34,9 +34,7 @@ beforeAll(async () => {
 });
 afterAll(() => db.drop());
 beforeEach(async () => {
-  await db.owner.query(
-    'delete from string_sign_off; delete from install_check; delete from connector_pair; delete from connector_type',
-  );
+  await db.owner.query('delete from string_sign_off; delete from install_check; delete from connector_pair');
 });
 
 async function stringRef(siteName: string, name: string): Promise<string> {
@@ -74,7 +72,7 @@ async function connector(name: string, family: string, organisation = technician
   const { rows } = await db.owner.query<{ id: number; ref: string }>(
     `insert into connector_type (organisation_id, name, maker, family, voltage_max, current_max)
      values ($1, $2, 'Tidewell', $3, 1500, 40) returning id, ref`,
-    [organisation, name, family],
+    [organisation, `${name} ${randomUUID().slice(0, 8)}`, family],
   );
   if (!rows[0]) throw new Error('not written');
   return rows[0];

@@ -4,7 +4,7 @@ import type { ReactNode } from 'react';
 export function Caution({ strong, children }: { strong: string; children?: ReactNode }) {
   return (
     <aside
-      aria-label="Safety caution"
+      aria-label={`Safety caution: ${strong}`}
       className="rounded border border-caution-ground bg-caution-ground px-4 py-3 text-[15px] leading-[22px] text-caution-text"
     >
       <p>

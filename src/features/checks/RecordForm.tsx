@@ -137,8 +137,8 @@ export function RecordForm({ sheet, row, cell, onSaved, onCancel }: Props) {
         >
           {[theirs.reason, theirs.note, figureText({ check, record: theirs }, row.context.connectors)]
             .filter(Boolean)
-            .join('. ') || 'No note.'}{' '}
-          What you typed is still here.
+            .join('. ') || 'No note'}
+          . What you typed is still here.
         </Notice>
       )}
       {refused && !theirs && (

@@ -178,7 +178,7 @@ function CheckItem({
         </div>
       </div>
       {mayWrite && !editing && (
-        <div className="flex flex-none flex-wrap items-start gap-2 pl-[34px] lg:pl-0">
+        <div className="flex flex-none flex-wrap items-start gap-2 pl-[34px] lg:max-w-[320px] lg:justify-end lg:pl-0">
           <Button onClick={() => setEditing(true)}>
             {record ? 'Record again' : 'Record'}
             <span className="sr-only">: {check.name}</span>
