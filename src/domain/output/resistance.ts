@@ -277,9 +277,9 @@ export interface LoopComparison {
 /** Above this a connector is worth a look: at 10 A it makes 10 W in one place. From experience. */
 export const EXCESS_OHM = 0.1;
 
-const SIBLINGS_MIN = 5;
+export const SIBLINGS_MIN = 5;
 /** Standard deviations that an excess must have: eight sound strings in a thousand reach it by chance. */
-const DEVIATIONS = 2.4;
+export const DEVIATIONS = 2.4;
 
 /**
  * Compares a fit with the string's own past, else with at least five like strings, else with its cables. Long cables are

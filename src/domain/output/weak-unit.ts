@@ -32,15 +32,15 @@ export interface WeakUnit {
 }
 
 const CURRENT_MIN = 1;
-const QUARTERS_MIN = 8;
-const UNITS_MIN = 4;
+export const QUARTERS_MIN = 8;
+export const UNITS_MIN = 4;
 /** Modified z of Iglewicz & Hoaglin 1993, as a factor on the robust standard deviation. */
-const DEVIATIONS = 3.5;
-const LOSS_MIN = 0.06;
+export const DEVIATIONS = 3.5;
+export const LOSS_MIN = 0.06;
 /** Less than this share of its neighbours' voltage: the unit passes none of its module's. */
-const HELD_BELOW = 0.08;
+export const HELD_BELOW = 0.08;
 /** Persistent: so, in this share of the quarters. */
-const MOSTLY = 0.7;
+export const MOSTLY = 0.7;
 const SOMETIMES = 0.15;
 
 /** Units that are weak, by position. Empty: none, or too few quarters under load to say (see `enoughToTell`). */

@@ -1,6 +1,7 @@
 import { judgeMembership, type MemberString, type MembershipOutcome } from '../../domain/output/membership';
 import { fitLoop, judgeLoop, type LoopSample } from '../../domain/output/resistance';
-import { number, quantity } from '../../drawings/numbers';
+import { UNITS_MIN, weakUnits, type WeakUnit } from '../../domain/output/weak-unit';
+import { number, percent, quantity } from '../../drawings/numbers';
 import type { Example } from './example';
 
 const SAMPLES = 96;
@@ -140,6 +141,83 @@ export const resistanceExample: Example = {
           label: 'Threshold',
           value: `${quantity(finding.threshold.ohm, 'Ω', 2)}; ${finding.threshold.source}`,
         },
+      ],
+    };
+  },
+};
+
+const KINDS: Record<WeakUnit['kind'], string> = {
+  held: 'passes nothing',
+  bypassed_substring: 'bypassed cells',
+  part_of_day: 'low for part of the day',
+  low: 'low all day',
+};
+const QUARTERS = 40;
+
+export const weakUnitExample: Example = {
+  inputs: [
+    { kind: 'number', key: 'units', label: 'Units of the string', min: 1, max: 63, whole: true, start: 14 },
+    {
+      kind: 'number',
+      key: 'volts',
+      label: 'Unit 5 gives, where its neighbours give 34 V',
+      unit: 'V',
+      min: -1,
+      max: 34,
+      start: 22.3,
+    },
+    {
+      kind: 'number',
+      key: 'hours',
+      label: 'In so many of the day’s ten hours',
+      unit: 'h',
+      min: 0,
+      max: 10,
+      start: 10,
+    },
+    {
+      kind: 'choice',
+      key: 'groups',
+      label: 'Bypass diodes of a module',
+      options: [
+        { value: '3', label: '3' },
+        { value: '2', label: '2' },
+      ],
+      start: '3',
+    },
+  ],
+  answer: ({ number: n, choice }) => {
+    const units = n('units');
+    const from = (QUARTERS - 4 * n('hours')) / 2;
+    const voltage = Array.from({ length: units }, (_, u) =>
+      Float64Array.from({ length: QUARTERS }, (_q, q) =>
+        u === 4 && q + 0.5 >= from && q + 0.5 < QUARTERS - from
+          ? n('volts') + 0.1 * unrest(q, u)
+          : 34 + 0.15 * unrest(u, 2) + 0.1 * unrest(q, u),
+      ),
+    );
+    const found = weakUnits({
+      voltage,
+      current: new Float64Array(QUARTERS).fill(7),
+      bypassGroups: Number(choice('groups')),
+    });
+    const [weak] = found;
+    if (!weak)
+      return {
+        finding:
+          units < UNITS_MIN
+            ? `Can’t tell: ${UNITS_MIN} units are needed to say what is usual`
+            : 'No unit of the string stands out',
+        figures: [],
+      };
+    return {
+      finding: weak.words,
+      figures: [
+        { label: 'What it looks like', value: KINDS[weak.kind] },
+        { label: 'Its voltage over its neighbours’', value: percent(weak.ratio, 1) },
+        { label: 'In that share of the quarters', value: percent(weak.share) },
+        { label: 'Low below', value: percent(weak.threshold.ratio, 1) },
+        { label: 'It could also be', value: weak.couldBe.join('; ') },
       ],
     };
   },

@@ -1,7 +1,7 @@
 import type { Example } from './example';
 import { lowOutputExample, rollCallExample, shutdownTestExample } from './examples-commissioning';
 import { causesExample, conductorsExample, verdictExample } from './examples-conduct';
-import { membershipExample, resistanceExample } from './examples-currents';
+import { membershipExample, resistanceExample, weakUnitExample } from './examples-currents';
 import { expectedExample, readingExample, yieldsExample } from './examples-electrical';
 
 /** Every live example by the anchor of its note. */
@@ -12,6 +12,7 @@ export const EXAMPLES = {
   causes: causesExample,
   expected: expectedExample,
   'low-output': lowOutputExample,
+  'weak-unit': weakUnitExample,
   membership: membershipExample,
   resistance: resistanceExample,
   'shutdown-test': shutdownTestExample,

@@ -97,6 +97,13 @@ describe('they say what the judgements say', () => {
     expect(wordsOf('low-output')).toMatch(/^A3 makes 1\d % less/);
     expect(wordsOf('low-output', { days: '2' })).toMatch(/makes what it should/);
   });
+  it('a third missing all day is bypassed cells, nothing is held, some hours are shade', () => {
+    expect(wordsOf('weak-unit')).toMatch(/^Unit 5 gives 2 of 3 parts/);
+    expect(wordsOf('weak-unit', { volts: '-0,5' })).toMatch(/^Unit 5 passes nothing/);
+    expect(wordsOf('weak-unit', { hours: '4' })).toMatch(/^Unit 5 is low for part of the day/);
+    expect(wordsOf('weak-unit', { volts: '33.9' })).toMatch(/^No unit/);
+    expect(wordsOf('weak-unit', { units: '3' })).toMatch(/^Can’t tell/);
+  });
   it('a unit of another string, unless the strings are alike', () => {
     expect(wordsOf('membership')).toMatch(/^It carries the current of another string: A2/);
     expect(wordsOf('membership', { apart: '0' })).toMatch(/^Can’t tell/);

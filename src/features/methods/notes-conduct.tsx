@@ -2,7 +2,14 @@ import { UNIT_PRESETS } from '../../domain/equipment/unit-type';
 import { SIBLINGS_FOR_SPREAD } from '../../domain/output/expected';
 import { PRIORS } from '../../domain/readings/hypotheses';
 import { TELL_FROM } from '../../domain/readings/interpret';
-import { AGREEING, OUTSIDE_ARRAY_LIMIT_V } from '../../domain/verdicts/conductors';
+import {
+  AGREEING,
+  DEVIATIONS,
+  INPUTS_DIFFER,
+  OUTSIDE_ARRAY_LIMIT_V,
+  STEADY_DEVIATIONS,
+  STEADY_S,
+} from '../../domain/verdicts/conductors';
 import { judgementTimes, timeLimitOf } from '../../domain/verdicts/context';
 import { SILENT_AFTER_INTERVALS } from '../../domain/verdicts/judge';
 import { percent } from '../../drawings/numbers';
@@ -72,6 +79,7 @@ export const CONDUCT_NOTES: readonly Note[] = [
       'One reading of a string in shutdown often fits two explanations: one unit is worth little more than the tolerance of all.',
       'The type of unit, the count and what is commanded are taken as entered.',
       'At night and under snow a low reading proves nothing.',
+      'Readings to earth that add up to the string’s are a fault; its place is told only where all modules give like voltages.',
     ],
   },
   {
@@ -144,7 +152,8 @@ export const CONDUCT_NOTES: readonly Note[] = [
       <>
         The voltage of an inverter input is held against what the units of its strings claim. If it stays up
         though all claim shutdown, the string is not shutting down, position unknown.{' '}
-        {AGREEING.not_shutting_down} readings must agree.
+        {AGREEING.not_shutting_down} readings must agree. While released, the units&rsquo; outputs must add up
+        to the input; where units tell nothing, the missing voltage says how many are held.
       </>
     ),
     formulas: [
@@ -157,14 +166,42 @@ export const CONDUCT_NOTES: readonly Note[] = [
           brackets(n(OUTSIDE_ARRAY_LIMIT_V), word(' V'), op(','), n(2), v('n'), sub(v('U'), word('sd,max'))),
         ),
       },
+      {
+        label: 'outputs against the input, released',
+        set: row(
+          op('|'),
+          sum(v('i')),
+          sub(v('U'), v('i')),
+          op('−'),
+          sub(v('U'), word('input')),
+          op('|'),
+          op('>'),
+          word('max'),
+          brackets(n(DEVIATIONS), v('σ'), op(','), frac(n(2), n(3)), sub(v('U'), word('module'))),
+        ),
+      },
+      {
+        label: 'held units of a silent string',
+        set: row(
+          v('k'),
+          op('='),
+          frac(
+            row(v('n'), sub(v('U'), word('module')), op('−'), sub(v('U'), word('input'))),
+            row(sub(v('U'), word('module')), op('−'), sub(v('U'), word('held'))),
+          ),
+        ),
+      },
     ],
+    where: `Held units are counted where they miss six tenths of a module or ${STEADY_DEVIATIONS} standard deviations for ${STEADY_S / 3600} h, for a shadow moves on. Inputs of one inverter are taken to differ by ${percent(INPUTS_DIFFER, 1)} a module.`,
     sources: [
       `${OUTSIDE_ARRAY_LIMIT_V} V outside the array boundary: NEC 690.12(B)(1).`,
       'Twice the units’ highest shutdown voltage: our own rule.',
     ],
     limits: [
       `An inverter's capacitors hold the home run up: nothing is said for ${MINUTELY.capacitorHoldS} s after the limit.`,
-      'Strings that share an input share its voltage: which of them it is can not be told.',
+      'Strings that share an input share its voltage: which of them it is can not be told, and a held unit in one of silent strings shows as current only.',
+      'Units that measure their module only: their outputs are what they claim. One of more than about fourteen is within the input’s own accuracy.',
+      'A shadow that stays two hours on as many modules reads like held units. Without other strings on the inverter one held unit of many is within what a datasheet foretells.',
       'Inverters read a few volts badly. A low figure is no witness of a shutdown.',
     ],
   },

@@ -2,7 +2,19 @@ import { BAND, HEARD_MIN, NOT_STIRRED_BELOW } from '../../domain/commissioning/r
 import { DAYS_LOOKED_AT, DAYS_LOW, LOSS_MIN, Z_LIMIT } from '../../domain/output/low-output';
 import { DECISIVE_METHOD, ODDS_NEEDED } from '../../domain/output/membership';
 import { SIBLINGS_MIN, SUN_ENOUGH } from '../../domain/output/plane-reference';
-import { EXCESS_OHM } from '../../domain/output/resistance';
+import {
+  DEVIATIONS as DEVIATIONS_LOOP,
+  EXCESS_OHM,
+  SIBLINGS_MIN as LOOPS_MIN,
+} from '../../domain/output/resistance';
+import {
+  DEVIATIONS as DEVIATIONS_UNIT,
+  HELD_BELOW,
+  LOSS_MIN as LOSS_MIN_UNIT,
+  MOSTLY,
+  QUARTERS_MIN,
+  UNITS_MIN,
+} from '../../domain/output/weak-unit';
 import { OUTSIDE_ARRAY_LIMIT_V } from '../../domain/verdicts/conductors';
 import { timeLimitOf } from '../../domain/verdicts/context';
 import { number, percent } from '../../drawings/numbers';
@@ -45,6 +57,54 @@ export const OUTPUT_NOTES: readonly Note[] = [
       `Fewer than ${SIBLINGS_MIN} strings in a plane: the datasheet model stands in, with a wide band.`,
       'Where strings share an input, their sum is judged.',
       'What all strings of a plane lose alike does not show here.',
+    ],
+  },
+  {
+    key: 'weak-unit',
+    title: 'A weak unit in its string',
+    computes: (
+      <>
+        Each unit&rsquo;s voltage over the median of its string, quarter by quarter of a day under load. A
+        unit that is low nearly all day is told by how much is missing: all of it (held in shutdown, not
+        mated), a whole number of bypassed sub-strings, or anything else; one that is low for some hours only
+        is shaded, or has a contact that comes and goes.
+      </>
+    ),
+    formulas: [
+      {
+        label: 'low',
+        set: row(
+          frac(sub(v('U'), v('i')), word('median')),
+          op('<'),
+          n(1),
+          op('−'),
+          word('max'),
+          brackets(n(LOSS_MIN_UNIT), op(','), n(DEVIATIONS_UNIT), v('σ')),
+        ),
+      },
+      {
+        label: 'k of m sub-strings bypassed',
+        set: row(
+          n(1),
+          op('−'),
+          frac(sub(v('U'), v('i')), word('median')),
+          op('≈'),
+          frac(v('k'), v('m')),
+          op('+'),
+          frac(row(n(0.5), word(' V')), word('median')),
+        ),
+      },
+    ],
+    where: `σ is 1.4826 × MAD over the string's units. Nothing passes below ${percent(HELD_BELOW)}; nearly all day means ${percent(MOSTLY)} of the quarters.`,
+    sources: [
+      `${DEVIATIONS_UNIT} robust standard deviations: Iglewicz & Hoaglin 1993. At least ${percent(LOSS_MIN_UNIT)}: from experience.`,
+      'Half a volt across a bypass diode: from experience.',
+    ],
+    limits: [
+      `Fewer than ${UNITS_MIN} units or ${QUARTERS_MIN} quarters under load say nothing.`,
+      'An optimizing unit moves its output, so its module side is looked at.',
+      'Units in parallel strings are held against their own string only.',
+      'Units that report nothing have no voltage of their own to look at.',
     ],
   },
   {
@@ -103,7 +163,7 @@ export const OUTPUT_NOTES: readonly Note[] = [
           v('a'),
           op('+'),
           v('b'),
-          sub(v('U'), word('input')),
+          v('U'),
           op('+'),
           v('R'),
           v('I'),
@@ -111,9 +171,10 @@ export const OUTPUT_NOTES: readonly Note[] = [
       },
       { label: 'heat', set: row(v('P'), op('='), sup(v('I'), n(2)), v('R')) },
     ],
-    where: `b takes up gain errors. ${EXCESS_OHM} Ω more than before is worth a look.`,
+    where: `U is the mean of both ends; b takes up gain errors. ${EXCESS_OHM} Ω more than before is worth a look, if it is ${DEVIATIONS_LOOP} standard deviations as well. What ${LOOPS_MIN} or more strings show alike is the weather's and taken off.`,
     sources: ['Theil–Sen slopes: P. K. Sen, 1968.', 'Threshold: 10 W in one place at 10 A, from experience.'],
     limits: [
+      'Both ends must be read at one moment. Where the input tells its current, readings whose currents disagree are left out; what is left of the tracker’s wobble makes three days good for about 0.05 Ω.',
       'Connectors between a module and its unit lie outside this loop: no finding is not proof.',
       'A cable is told from a connector only by growth or by like strings.',
     ],
