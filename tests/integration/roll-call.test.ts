@@ -7,6 +7,7 @@ import { siteSteps } from '../../src/schemas/api/commissioning';
 import { asActor } from '../../src/server/db/transaction';
 import { AppError } from '../../src/server/errors';
 import { sitesAndTheirSteps } from '../../src/server/services/commissioning';
+import { rollCallByForm } from '../../src/server/services/roll-call-form';
 import { rollCallPage } from '../../src/server/services/roll-call-page';
 import { startRollCall } from '../../src/server/services/start-roll-call';
 import { stopRollCall } from '../../src/server/services/stop-roll-call';
@@ -271,5 +272,36 @@ describe('the sites under way', () => {
     const gaps = steps.steps.flatMap((step) => step.gaps.map((gap) => gap.words));
     expect(gaps).toContain('1 serial is heard and on no slot.');
     expect(gaps.filter((gap) => gap.endsWith(': labels failed.'))).toHaveLength(1);
+  });
+});
+
+describe('the form of a page without a script', () => {
+  const send = (actor: Actor, form: Record<string, string>) =>
+    asActor(actor, (tx) => rollCallByForm(tx, actor, fleet.site(HALL).ref, form, '127.0.0.1'));
+
+  it('starts and stops as the page does', async () => {
+    expect(await send(technician, { action: 'start', personOnSite: 'Per Aalto', onSite: 'true' })).toBeNull();
+    expect((await read(technician, HALL)).run).toMatchObject({ personOnSite: 'Per Aalto', stoppedAt: null });
+    expect(await send(technician, { action: 'stop' })).toBeNull();
+    expect((await read(technician, HALL)).run?.stoppedBy).toBe('Bram Ottersley');
+  });
+  it('gives back what was typed with what is wrong', async () => {
+    expect(await send(technician, { action: 'start', personOnSite: 'Per Aalto' })).toEqual({
+      personOnSite: 'Per Aalto',
+      fault: 'Confirm that this person is on site now.',
+      status: 'invalid',
+    });
+    await send(technician, { personOnSite: 'Per Aalto', onSite: 'true' });
+    expect(await send(technician, { personOnSite: 'Another One', onSite: 'true' })).toMatchObject({
+      personOnSite: 'Another One',
+      status: 'conflict',
+    });
+  });
+  it('is not for who may not run one, and not for another organisation’s site', async () => {
+    const analyst = await fleet.actor('analyst@lowfield.example');
+    const form = { personOnSite: 'Per Aalto', onSite: 'true' };
+    expect((await failure(send(analyst, form))).kind).toBe('forbidden');
+    expect((await failure(send(stranger, form))).kind).toBe('not_found');
+    expect((await db.owner.query('select from roll_call')).rowCount).toBe(0);
   });
 });

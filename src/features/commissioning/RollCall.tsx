@@ -39,7 +39,7 @@ interface Props {
 
 type Open =
   | { kind: 'place'; stranger: Stranger }
-  | { kind: 'replace'; slot: SlotRef }
+  | { kind: 'replace'; slot: SlotRef | null }
   | { kind: 'swap'; first: SlotRef | null; second: SlotRef | null };
 const DONE: Record<PlaceBody['kind'], string> = {
   place: 'The unit is placed',
@@ -80,7 +80,6 @@ export function RollCall({ initial, mayRun, mayPlace, view, typed }: Props) {
   const now = useNow(initial.at, 5000);
 
   const tally = useMemo(() => tallyOf(page), [page]);
-  const open = page.run !== null && page.run.stoppedAt === null;
   const outlook = useMemo(
     () => (page.run && !page.run.stoppedAt ? outlookOf(tally, page.run, now) : null),
     [tally, page.run, now],
@@ -155,6 +154,7 @@ export function RollCall({ initial, mayRun, mayPlace, view, typed }: Props) {
             <WiredSheet
               siteId={siteId}
               onReview={mayPlace ? (first, second) => setDialog({ kind: 'swap', first, second }) : null}
+              onReplace={mayPlace ? () => setDialog({ kind: 'replace', slot: null }) : null}
             />
           )}
           <GatewaysSheet page={page} tally={tally} />

@@ -10,13 +10,15 @@ import { paths } from '../../schemas/paths';
 
 interface Props {
   siteId: string;
-  onReview: ((first: SlotRef, second: SlotRef | null) => void) | null;
+  onReview: ((first: SlotRef | null, second: SlotRef | null) => void) | null;
+  /** Another unit takes the place of one; null: the person may not change the as-built. */
+  onReplace: (() => void) | null;
 }
 
 const SHOWN = 3;
 
 /** Units whose current is another string's, in short; the evidence has a page of its own. */
-export function WiredSheet({ siteId, onReview }: Props) {
+export function WiredSheet({ siteId, onReview, onReplace }: Props) {
   const { data, error } = useQuery(
     {
       queryKey: ['membership', siteId, '6'],
@@ -72,15 +74,19 @@ export function WiredSheet({ siteId, onReview }: Props) {
                   ? `${counts.here} units carry the current of their string; for ${counts.cantTell} it can’t be told.`
                   : 'It can’t be told yet: the strings’ currents are too small or too alike.'}
           </p>
-          <div className="mt-2.5 flex flex-wrap gap-2">
+          <div className="mt-2.5">
             <ButtonLink href={paths.membership(siteId)}>Compare currents, or isolate a string</ButtonLink>
-            {onReview && (
-              <Button onClick={() => onReview({ stringId: '', position: 0 }, null)}>
-                Exchange two serials
-              </Button>
-            )}
           </div>
         </>
+      )}
+      {onReview && onReplace && (
+        <div className="mt-4 border-t border-rule-faint pt-3">
+          <p className="mb-2 text-sm text-ink-2">Read on the roof that it is otherwise?</p>
+          <div className="flex flex-wrap gap-2">
+            <Button onClick={() => onReview(null, null)}>Exchange two serials</Button>
+            <Button onClick={onReplace}>Replace a unit</Button>
+          </div>
+        </div>
       )}
     </Sheet>
   );

@@ -26,11 +26,11 @@ const KEYS = { rust: 'bg-rust', slate: 'bg-slate', petrol: 'bg-petrol' } as cons
 
 /** Which line is whose. */
 function Legend({ suspect: s }: { suspect: MembershipSuspect }) {
-  const keys = [
+  const keys: { tone: keyof typeof KEYS; name: string }[] = [
     { tone: 'rust', name: unitName(s) },
     { tone: 'slate', name: `${s.string}, its string` },
-    ...(s.series.otherName ? [{ tone: 'petrol', name: s.series.otherName }] : []),
-  ] as const;
+  ];
+  if (s.series.otherName) keys.push({ tone: 'petrol', name: s.series.otherName });
   return (
     <ul className="flex flex-wrap gap-x-4 text-sm">
       {keys.map((k) => (

@@ -49,6 +49,7 @@ const string = (id: string, name: string, slots: SlotNow[]): StringNow => ({
   expectedBand: null,
   expectedInShutdown: null,
   expectedFrom: '',
+  expectedStrings: 0,
   command: null,
   dark: false,
   input: { inverter: 'Inverter 1', number: 1, voltage: null, current: null, strings: 1 },

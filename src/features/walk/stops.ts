@@ -43,11 +43,12 @@ export function stopsOfPage(page: WalkPage): Stop[] {
   return ordered(stopsOf(strings, { rollCalled: page.rollCalled, answered: new Set(page.answered) }));
 }
 
-const DASH = '~';
+/** An address carries it as it is, and no string is called so. */
+const BETWEEN = '*';
 /** Keys of chosen stops as an address carries them; empty: all. */
 export const keysOf = (view: Pick<WalkView, 'stops'>): Set<string> =>
-  new Set(view.stops.split(DASH).filter(Boolean));
-export const stopsParam = (keys: Iterable<string>): string => [...keys].join(DASH);
+  new Set(view.stops.split(BETWEEN).filter(Boolean));
+export const stopsParam = (keys: Iterable<string>): string => [...keys].join(BETWEEN);
 
 /** The stops of a view: those chosen, or all of a string's, or all. */
 export function chosenStops(stops: readonly Stop[], view: WalkView): Stop[] {
