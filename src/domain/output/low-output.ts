@@ -101,7 +101,10 @@ export function judgeOutput(
       ...base,
       ...none,
       outcome: 'as_expected',
-      words: `${s.name} makes what it should`,
+      words:
+        low.length === 0
+          ? `${s.name} makes what it should`
+          : `${s.name} was low on ${low.length} of ${looked.length} days; ${DAYS_LOW} make a finding`,
       confidence: low.length === 0 ? 0.95 : 0.8,
     };
 

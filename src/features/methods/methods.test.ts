@@ -95,7 +95,7 @@ describe('they say what the judgements say', () => {
   });
   it('two of 14 missing on four days, and too few days', () => {
     expect(wordsOf('low-output')).toMatch(/^A3 makes 1\d % less/);
-    expect(wordsOf('low-output', { days: '2' })).toMatch(/makes what it should/);
+    expect(wordsOf('low-output', { days: '2' })).toMatch(/was low on 2 of 5 days/);
   });
   it('a third missing all day is bypassed cells, nothing is held, some hours are shade', () => {
     expect(wordsOf('weak-unit')).toMatch(/^Unit 5 gives 2 of 3 parts/);
