@@ -53,6 +53,7 @@ export function MissingSheet({
     columns.push({
       key: 'replace',
       label: 'Another unit',
+      from: 'sm', // on a phone "Replace a unit" below does it
       cell: (u) => (
         <Button
           className="!px-2.5 !text-sm"

@@ -191,6 +191,11 @@ describe('the sentence of a roll call', () => {
       }),
     ).toContain('None of the 3 units with serials AA-0… has stirred: compare their labels.');
   });
+  it('running, and whoever was to come has come', () => {
+    expect(said(some, run(), { expected: 0, by: null, notStirred: [] })).toBe(
+      'No further answers are expected soon. 3 units have not answered: walk to them, and compare the label.',
+    );
+  });
   it('running, nothing can be said yet', () => {
     expect(said(some, run())).toBe(
       'The loggers are listening. Too few answers so far to say how long it takes.',

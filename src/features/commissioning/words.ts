@@ -61,9 +61,15 @@ function running(
 ): Pick<RollCallWords, 'strong' | 'rest'> {
   const missing = tally.missing.length;
   const rest = notStirred(outlook?.notStirred ?? []);
-  if (!outlook || (outlook.expected === 0 && !rest))
+  if (!outlook)
     return { strong: 'The loggers are listening.', rest: 'Too few answers so far to say how long it takes.' };
-  if (outlook.expected === 0) return { strong: 'No further answers are expected soon.', rest };
+  if (outlook.expected === 0)
+    return {
+      strong: 'No further answers are expected soon.',
+      rest:
+        rest ||
+        `${counted(missing, 'unit')} ${have(missing)} not answered: walk to ${missing === 1 ? 'it' : 'them'}, and compare the label.`,
+    };
   const when = outlook.by ? ` by ${clock(outlook.by, timeZone)}` : '';
   const who =
     outlook.expected >= missing
