@@ -1,18 +1,12 @@
 import type { Knex } from 'knex';
 import { unitsOf, type FleetPlan } from '../../simulator/plant/plan';
 import { known } from '../plant/rows';
+import { writeShutdownTests } from '../records/shutdown-tests';
 import type { SeededPlant } from '../plant/seeded';
 import { CopyInto, copyRows, WaitingRows } from './copy';
 import { writeDays } from './days';
 import { QUARTER_COLUMNS } from './quarters';
-import {
-  writeCommands,
-  writeLastHeard,
-  writeNewestRows,
-  writeRollCall,
-  writeShutdownTests,
-  writeStates,
-} from './records';
+import { writeCommands, writeLastHeard, writeNewestRows, writeRollCall, writeStates } from './records';
 import { FRAME_COLUMNS, MINUTES_S, QUARTERS_S, SiteHistory, type Lines } from './site-history';
 
 const DAY_S = 86_400;
@@ -113,7 +107,7 @@ export async function seedHistory(
       await writeStates(tx, history);
       await writeRollCall(tx, history.site, technician, history);
       await writeCommands(tx, history.site, history, fleet.since);
-      await writeShutdownTests(tx, fleet, history.site, technician.name);
+      await writeShutdownTests(tx, fleet, history.site, technician);
     }
   }
   await writeNewestRows(tx);

@@ -1,13 +1,11 @@
 import type { Knex } from 'knex';
 import { keyOf, uniform } from '../../simulator/chance';
 import { firstReleasedS } from '../../simulator/plant/commands';
-import type { FleetPlan } from '../../simulator/plant/plan';
 import { insertRows, known } from '../plant/rows';
 import type { SeededSite } from '../plant/seeded';
 import type { SiteHistory } from './site-history';
 import { maskOf, sumsOf } from './site-history';
 
-const DAY_MS = 86_400_000;
 const at = (epochS: number) => new Date(epochS * 1000).toISOString();
 
 /** The newest of everything: what pages show before a logger speaks again. */
@@ -193,61 +191,6 @@ export async function writeCommands(
     return inForce === 'released' ? [released] : [released, row(inForce, since, by)];
   });
   await insertRows(db, 'command', columns, rows);
-}
-
-/** A witnessed shutdown test at hand-over and, where a year has passed, one after it. */
-export async function writeShutdownTests(
-  db: Knex,
-  fleet: FleetPlan,
-  site: SeededSite,
-  technician: string,
-): Promise<void> {
-  const { plan } = site;
-  if (plan.switchedOnOn === null) return;
-  const handOver = Date.parse(plan.switchedOnOn) + 12 * 3_600_000 - plan.longitude * 240_000;
-  const times = [handOver, handOver + 366 * DAY_MS].filter((t) => t < fleet.since * 1000 - 3 * DAY_MS);
-  await insertRows(
-    db,
-    'shutdown_test',
-    {
-      site_id: 'int4',
-      zone_id: 'int4',
-      at: 'timestamptz',
-      made_by: 'text',
-      result: 'text',
-      strings: 'int2',
-      detail: 'jsonb',
-    },
-    times.flatMap((time) =>
-      plan.zones.map((zone) => {
-        const strings = plan.strings.filter((s) => s.zone === zone.name);
-        return {
-          site_id: site.id,
-          zone_id: known(site.zones, zone.name, 'the zone'),
-          at: new Date(time).toISOString(),
-          made_by: technician,
-          result: 'passed',
-          strings: strings.length,
-          detail: {
-            limitV: 30,
-            withinS: 30,
-            witness: plan.contactName,
-            readings: strings.map((s) => {
-              const left = uniform(keyOf(`${plan.key}/${s.name}`), Math.floor(time / DAY_MS)) * 0.04 + 0.98;
-              const volts = Math.round(s.slots.length * 0.6 * left * 10) / 10;
-              return {
-                string: s.name,
-                afterS: 20,
-                positiveToNegative: volts,
-                positiveToEarth: 0.1,
-                negativeToEarth: -0.1,
-              };
-            }),
-          },
-        };
-      }),
-    ),
-  );
 }
 
 /** When loggers and gateways were last heard, by the newest frames. */

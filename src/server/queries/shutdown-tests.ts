@@ -106,7 +106,7 @@ export async function addAct(
 }
 
 export interface NewSignedTest {
-  head: TestHead;
+  head: Pick<TestHead, 'draftId' | 'ref' | 'siteId' | 'zoneId' | 'followsId'>;
   personId: number;
   personName: string;
   at: string;
