@@ -50,6 +50,9 @@ const cookieOf = (role: string): Promise<string> => {
   return known;
 };
 
+/** A page's answer to what was done may take a while on a busy machine. */
+const eventually = <T>(read: () => T | Promise<T>) => expect.poll(read, { timeout: 20_000 });
+
 async function context(
   role: string,
   more: Parameters<Browser['newContext']>[0] = {},
@@ -151,19 +154,19 @@ describe('strings and serials from a file', () => {
     await page.getByRole('button', { name: 'Make them' }).click();
     await page.getByLabel('Unit type', { exact: true }).selectOption('Reporting unit, output side');
     await page.getByLabel('Module type', { exact: true }).selectOption('Mono 430, 108 half cells');
-    await expect.poll(() => page.locator('h1').innerText()).toMatch(/^\d cells of 12 rows need a look/);
+    await eventually(() => page.locator('h1').innerText()).toMatch(/^\d cells of 12 rows need a look/);
     expect(await axeFaults(page)).toEqual([]);
     await page.getByRole('button', { name: 'Write UN-K1-3' }).click();
     await page.getByLabel('Cell in row 6, position').fill('5');
     await page.getByLabel('Cell in row 6, position').press('Enter');
 
-    await expect.poll(() => page.locator('h1').innerText()).toBe('12 rows would make 12 changes');
+    await eventually(() => page.locator('h1').innerText()).toBe('12 rows would make 12 changes');
     await page.getByRole('button', { name: 'Import 12 rows' }).click();
     expect(await page.getByText('Say why, in a few words').isVisible()).toBe(true);
     await page.getByLabel('Why', { exact: true }).fill('List of the installer');
     expect(await axeFaults(page)).toEqual([]);
     await page.getByRole('button', { name: 'Import 12 rows' }).click();
-    await expect.poll(() => page.locator('h1').innerText()).toBe('12 rows are in the as-built');
+    await eventually(() => page.locator('h1').innerText()).toBe('12 rows are in the as-built');
     expect(await serialsOf(page.request, 'K1')).toEqual([1, 2, 3, 4, 5, 6].map((n) => `UN-K1-${n}`));
     expect(await serialsOf(page.request, 'K2')).toEqual([
       'UN-K2-1',
@@ -181,7 +184,7 @@ describe('strings and serials from a file', () => {
     await page
       .getByLabel('A file: CSV or tab-separated')
       .setInputFiles({ name: 'as-built.csv', mimeType: 'text/csv', buffer: await csv.body() });
-    await expect.poll(() => page.locator('h1').innerText()).toBe('Nothing to change');
+    await eventually(() => page.locator('h1').innerText()).toBe('Nothing to change');
     expect(faults).toEqual([]);
     await desk.close();
   });
@@ -203,7 +206,7 @@ describe('strings and serials from a file', () => {
       mimeType: '',
       buffer: Buffer.from('colour;size\nred;1\n'),
     });
-    await expect.poll(() => page.locator('h1').innerText()).toContain('Which column is the string');
+    await eventually(() => page.locator('h1').innerText()).toContain('Which column is the string');
     expect(await page.evaluate(() => document.documentElement.scrollWidth)).toBeLessThanOrEqual(390);
     expect(await axeFaults(page)).toEqual([]);
     await desk.close();
@@ -228,21 +231,21 @@ describe('serials on the roof', () => {
     await phone.setOffline(true);
     await field.fill('un-k2-5');
     await page.getByRole('button', { name: 'Save and go on' }).tap();
-    await expect.poll(() => page.locator('h1').innerText()).toBe('K2, position 6 of 6');
+    await eventually(() => page.locator('h1').innerText()).toBe('K2, position 6 of 6');
     await page.getByText('1 serial waits on this phone').waitFor();
     expect(await serialsOf(page.request, 'K2').catch(() => [])).toEqual([]);
     await phone.setOffline(false);
     await page.reload();
     await hydrated(page);
-    await expect.poll(() => serialsOf(page.request, 'K2')).toContain('UN-K2-5');
+    await eventually(() => serialsOf(page.request, 'K2')).toContain('UN-K2-5');
 
     await page.getByRole('button', { name: 'Read with the camera' }).tap();
-    await expect.poll(() => field.inputValue(), { timeout: 30_000 }).toBe(SEEN);
+    await eventually(() => field.inputValue()).toBe(SEEN);
     expect(await axeFaults(page)).toEqual([]);
     await page.getByRole('button', { name: 'Save and go on' }).tap();
-    await expect.poll(async () => (await serialsOf(page.request, 'K2'))[5]).toBe(SEEN);
+    await eventually(async () => (await serialsOf(page.request, 'K2'))[5]).toBe(SEEN);
     await page.getByRole('button', { name: 'Undo' }).tap();
-    await expect.poll(async () => (await serialsOf(page.request, 'K2'))[5]).toBeNull();
+    await eventually(async () => (await serialsOf(page.request, 'K2'))[5]).toBeNull();
     const small = await page.evaluate(() =>
       [...document.querySelectorAll('main button, main select, main input:not([type=checkbox])')]
         .map((e) => ({ words: e.textContent, box: e.getBoundingClientRect() }))
@@ -272,7 +275,7 @@ describe('serials on the roof', () => {
     expect(await axeFaults(page)).toEqual([]);
     await page.getByLabel('Why yours is right').fill('Read twice');
     await page.getByRole('button', { name: 'Put UN-MINE there' }).tap();
-    await expect.poll(async () => (await serialsOf(page.request, 'K2'))[5]).toBe('UN-MINE');
+    await eventually(async () => (await serialsOf(page.request, 'K2'))[5]).toBe('UN-MINE');
     await Promise.all([mine.close(), theirs.close()]);
   });
 });
@@ -299,7 +302,7 @@ describe('the roof', () => {
     await settled(page);
     const box = await roof.boundingBox();
     await roof.tap({ position: { x: (box?.width ?? 0) * 0.3, y: (box?.height ?? 0) * 0.3 } });
-    await expect.poll(() => page.getByLabel('First module x').inputValue()).not.toBe('');
+    await eventually(() => page.getByLabel('First module x').inputValue()).not.toBe('');
     await page.getByLabel('Modules in a row').fill('3');
     await page.getByLabel('Strings alike').fill('2');
     await page.getByRole('button', { name: 'Lay 2 strings' }).tap();

@@ -176,6 +176,9 @@ export function progressWords(string: WalkString): string {
   const left = string.slots.filter((s) => s.serial === null).length;
   const of = string.slots.length;
   if (left === 0) return `All ${of} serials of ${string.name} are read`;
-  if (left === of) return `${of} serials of ${string.name} are still to be read`;
+  if (left === of)
+    return of === 1
+      ? `The one serial of ${string.name} is still to be read`
+      : `${of} serials of ${string.name} are still to be read`;
   return `${of - left} of ${of} read, ${ORDINALS[left] ?? left} to go`;
 }
