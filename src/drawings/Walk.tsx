@@ -36,6 +36,8 @@ const EXCEPTIONS: ReadonlySet<Condition> = new Set([
 const TEXT = { fontFamily: 'inherit', fontWeight: 600 } as const;
 /** Room at the left for the names of strings, drawing units. */
 const NAMES = 46;
+/** And at the top for the arrow to the north. */
+const NORTH = 34;
 const round = (n: number): string => n.toFixed(1);
 const lineOf = (points: readonly Point[]): string =>
   `M${points.map((p) => `${round(p.x)} ${round(p.y)}`).join('L')}`;
@@ -121,7 +123,7 @@ export function Walk({
   const margin = outline.length > 2 ? 14 : 34;
   const lead = placed.filter((s) => s.lead);
   const shown = close ? focusOn(whole, spanOf(lead.flatMap((s) => s.slots.map((p) => p.at)))) : whole;
-  const sheet = sheetOf(shown, width, margin, NAMES);
+  const sheet = sheetOf(shown, width, margin, NAMES, NORTH);
   // a module is about a metre and a sixth wide: marks may not cover their neighbours' numbers
   const size = Math.max(19, Math.min(24, sheet.scale * 1.1));
   const font = width < 480 ? 12 : 13;
@@ -262,10 +264,9 @@ export function Walk({
           )),
         )}
       </g>
-      <g transform={`translate(${width - margin - 22} ${margin + 10})`} fill={paint.ink}>
-        <rect x="-5" y="-8" width="26" height="44" fill={paint.sheet} opacity="0.85" />
-        <path d="M0 14 8 -4 16 14 8 9.5Z" />
-        <text x="8" y="29" textAnchor="middle" fontSize="12" fontFamily="inherit">
+      <g transform={`translate(${width - margin - 36} 4)`} fill={paint.ink}>
+        <path d="M0 20 8 2 16 20 8 15.5Z" />
+        <text x="22" y="17" fontSize="13" fontFamily="inherit">
           N
         </text>
       </g>

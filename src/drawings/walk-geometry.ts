@@ -47,14 +47,14 @@ export interface Sheet {
   at: (p: Point) => Point;
 }
 
-/** A drawing as wide as given, with a margin all round; `left`: a wider one there, for names. */
-export function sheetOf(span: Span, width: number, margin: number, left = margin): Sheet {
+/** A drawing as wide as given, with a margin all round; wider at the left for names, at the top for what stands there. */
+export function sheetOf(span: Span, width: number, margin: number, left = margin, top = margin): Sheet {
   const scale = (width - left - margin) / Math.max(1, span.east - span.west);
   return {
     width,
-    height: (span.north - span.south) * scale + 2 * margin,
+    height: (span.north - span.south) * scale + top + margin,
     scale,
-    at: (p) => ({ x: left + (p.x - span.west) * scale, y: margin + (span.north - p.y) * scale }),
+    at: (p) => ({ x: left + (p.x - span.west) * scale, y: top + (span.north - p.y) * scale }),
   };
 }
 
