@@ -13,7 +13,7 @@ import {
 } from '../../drawings/module-curve';
 import { ModuleCurve } from '../../drawings/ModuleCurve';
 import { irradiance, number, percent, power, celsius } from '../../drawings/numbers';
-import { curveEntry, curveMissing, type FormReading } from './form';
+import { CURVE_KEYS, curveEntry, curveMissing, type FormReading } from './form';
 import { fitOf, type FitLine, type ModuleFit } from './fit';
 
 const SWEEPS = [
@@ -60,7 +60,7 @@ export function CurveSheet({ reading }: { reading: FormReading }) {
       <Sheet title="The curve of this sheet" id="curve" className="lg:sticky lg:top-4">
         <Notice kind="empty" title="The curve appears when its figures are there">
           {curveMissing(reading) > 0
-            ? `${curveMissing(reading)} of them are missing or can’t be: the four points, the three coefficients and the cells.`
+            ? `${curveMissing(reading)} of ${CURVE_KEYS.length} to go: the four points, the three coefficients, cells, bypass groups and the operating temperature.`
             : 'The points can’t be of one module: see the marked field.'}
         </Notice>
       </Sheet>

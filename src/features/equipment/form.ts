@@ -50,7 +50,7 @@ export function readForm(family: EquipmentFamily, typed: TypedEntry): FormReadin
 }
 
 /** What a module's curve needs; the rest of its sheet may still be missing. */
-const CURVE_KEYS = [
+export const CURVE_KEYS = [
   'vocRef',
   'iscRef',
   'vmpRef',
@@ -78,9 +78,9 @@ export function curveEntry({ partial }: FormReading): Entry | null {
   return judgeEntry('modules', entry).conflicts.length > 0 ? null : entry;
 }
 
-/** How many figures of the curve are still missing or wrong. */
-export const curveMissing = ({ partial, faults }: FormReading): number =>
-  CURVE_KEYS.filter((key) => partial[key] === undefined || faults[key] !== undefined).length;
+/** How many figures of the curve are still missing or no numbers. */
+export const curveMissing = ({ partial }: FormReading): number =>
+  CURVE_KEYS.filter((key) => partial[key] === undefined).length;
 
 /**
  * A field as changed. Choosing the kind of a new unit fills everything but the name and the connectors with what is
