@@ -15,7 +15,8 @@ const withReading = (string: CaptureString, reading: ShownReading): CaptureStrin
 const withCheck = (string: CaptureString, check: ShownCheck): CaptureString => ({
   ...string,
   checks: [...string.checks.filter((c) => c.check !== check.check), check],
-  // what is signed is what stood: a later record leaves the signature behind
+  // what is signed is what the server has: until it has said what that is now, nothing can be signed
+  fingerprint: '',
   signOff: string.signOff && { ...string.signOff, stale: true },
 });
 

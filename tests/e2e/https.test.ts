@@ -117,6 +117,11 @@ describe('the site itself', () => {
     fs.copyFileSync(second.key, files.key);
     site.signal('SIGHUP');
     await expect.poll(() => shown(second.cert).catch(() => 'still the first')).toBe('second');
+    // without a signal too: the files are looked at
+    fs.copyFileSync(first.key, files.key);
+    fs.copyFileSync(first.cert, files.cert);
+    const changed = () => shown(first.cert).catch(() => 'still the second');
+    await expect.poll(changed, { timeout: 30_000, interval: 500 }).toBe('first');
   });
 
   it('says what is wrong with the files instead of starting', async () => {
@@ -180,14 +185,15 @@ describe('nginx in front, by the README', () => {
     execFileSync(program, ['-t', '-q', ...started], { stdio: 'pipe' }); // its own check of the syntax
     nginx = spawn(program, started, { stdio: ['ignore', 'pipe', 'pipe'] });
     nginx.stderr?.on('data', (chunk: Buffer) => (said += chunk.toString()));
-    await expect
-      .poll(() =>
-        askSecurely(`${url}/sign-in`, first.cert).then(
-          (a) => a.status,
-          () => said || 'not up',
-        ),
-      )
-      .toBe(200);
+    const up = () =>
+      askSecurely(`${url}/sign-in`, first.cert).then(
+        (answer) => answer.status === 200,
+        () => false,
+      );
+    for (let tries = 0; !(await up()); tries++) {
+      if (tries > 100) throw new Error(`nginx does not serve the site: ${said}`);
+      await new Promise((later) => setTimeout(later, 100));
+    }
   });
   afterAll(async () => {
     const ended = new Promise((resolve) => nginx.once('exit', resolve));

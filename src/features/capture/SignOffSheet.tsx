@@ -34,7 +34,9 @@ export function SignOffSheet({
       ? `${waits === 1 ? 'One record' : `${waits} records`} of this string must reach the server first.`
       : away
         ? 'Signing needs a network. Everything else is kept until then.'
-        : '';
+        : string.fingerprint === ''
+          ? 'The server is asked for the checks as it has them.'
+          : '';
   const { signOff } = string;
   const missing = sign.blocks.filter((block) => block.kind === 'missing');
   const submit = async () => {

@@ -12,6 +12,7 @@ export function WaitingScreen(props: SiteProps) {
   const { phone, state, site, clock } = props;
   const mine = ofPerson(state.records, site.person.id);
   const decisions = mine.filter((r) => r.state !== 'waiting').length;
+  if (!state.ready) return <p role="status">Reading what this phone keeps…</p>;
   const heading =
     mine.length === 0
       ? 'Nothing waits: the server has everything'
