@@ -57,8 +57,8 @@ function isotropicShare(surfaceTilt: number): number {
 function hayDaviesShare(inputs: TranspositionInputs, projection: number): number {
   const anisotropy = inputs.dni / inputs.dniExtra;
   const beamRatio = Math.max(projection, 0) / Math.max(cosDeg(inputs.solarZenith), 0.01745);
-  const share = anisotropy * beamRatio + (1 - anisotropy) * isotropicShare(inputs.surfaceTilt);
-  return Math.max(share, 0);
+  // a beam beyond the extraterrestrial (a cloud's edge, a wrong sensor) leaves no isotropic part, not a negative one
+  return anisotropy * beamRatio + Math.max(1 - anisotropy, 0) * isotropicShare(inputs.surfaceTilt);
 }
 
 function perezShare(inputs: TranspositionInputs, projection: number): number {
