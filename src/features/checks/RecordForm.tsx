@@ -41,8 +41,8 @@ export function RecordForm({ sheet, row, cell, onSaved, onCancel }: Props) {
   const [theirs, setTheirs] = useState<CheckRecord | null>(null);
   const ref = useRef(newRef());
   const noteId = useId();
-  const now = Date.now() / 1000;
-  const { figures, faults, judged } = filled(check, result, typed, row.context, now);
+  const [openedS] = useState(() => Date.now() / 1000);
+  const { figures, faults, judged } = filled(check, result, typed, row.context, openedS);
   const wantsReason = result === 'not_applicable';
   const noReason = wantsReason && reason.trim() === '';
 

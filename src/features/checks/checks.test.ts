@@ -1,11 +1,12 @@
 import { describe, expect, it } from 'vitest';
 import { UNIT_PRESETS } from '../../domain/equipment/unit-type';
 import { allPassed, context, H4, K6 } from '../../domain/commissioning/checks/sample-checks';
+import { judgedNow } from '../../domain/commissioning/readings/judged-now';
 import { checksFor } from '../../domain/commissioning/checks/list';
 import type { CaptureString } from '../../schemas/api/capture';
 import type { ChecksPage } from '../../schemas/api/checks-page';
 import { readingFinding } from '../../schemas/api/readings';
-import { judgedNow, listedReadings, readingRows, READINGS_DEFAULTS, stageShown } from './readings-rows';
+import { listedReadings, readingRows, READINGS_DEFAULTS, stageShown } from './readings-rows';
 import { readingsHeading, readingsSentence } from './readings-words';
 import { CHECKS_DEFAULTS, counted, figureText, listedRows, rowsOf } from './rows';
 import { begun, filled } from './typed';
@@ -210,7 +211,7 @@ describe('the list of readings', () => {
       ...s,
       readings: s.readings.map((r) => ({
         ...r,
-        finding: readingFinding.parse(judgedNow(page([s]).sheet, s, r)),
+        finding: readingFinding.parse(judgedNow(page([s]).sheet, s.id, r)),
       })),
     }));
   const strings = judged([

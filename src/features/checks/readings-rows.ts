@@ -1,5 +1,4 @@
-import { readingAround } from '../../domain/commissioning/readings/around';
-import { judgeReading } from '../../domain/commissioning/readings/judge-reading';
+import { judgedNow } from '../../domain/commissioning/readings/judged-now';
 import { stagesFor, type ReadingStage } from '../../domain/commissioning/readings/stages';
 import type { ReadingFinding } from '../../schemas/api/readings';
 import type { CaptureSnapshot, CaptureString } from '../../schemas/api/capture';
@@ -25,17 +24,6 @@ export interface ReadingRow {
   now: ReadingFinding | null;
 }
 
-/** A reading judged again with what stands around it by now. */
-export function judgedNow(
-  sheet: CaptureSnapshot,
-  string: CaptureString,
-  reading: ReadingHere,
-): ReadingFinding {
-  const around = readingAround(sheet, string.id, reading);
-  // what had answered when it was taken is what counts, not who has answered since
-  return judgeReading(reading, { ...around, heard: reading.finding?.heard ?? around.heard });
-}
-
 function rowOf(sheet: CaptureSnapshot, string: CaptureString, stage: ReadingStage): ReadingRow {
   const at = (kind: ReadingHere['kind']): ReadingHere | null =>
     string.readings.find((r) => r.stage === stage && r.kind === kind) ?? null;
@@ -44,9 +32,9 @@ function rowOf(sheet: CaptureSnapshot, string: CaptureString, stage: ReadingStag
     at('positive_to_earth'),
     at('negative_to_earth'),
   ];
-  const later = between && judgedNow(sheet, string, between);
+  const later = between && judgedNow(sheet, string.id, between);
   const known = between?.finding ?? later;
-  const lastEarth = negative && positive ? judgedNow(sheet, string, negative) : null;
+  const lastEarth = negative && positive ? judgedNow(sheet, string.id, negative) : null;
   const fault = lastEarth?.earth?.outcome === 'fault';
   return {
     key: `${string.id} ${stage}`,

@@ -117,9 +117,7 @@ export function figureText(
       if (value === undefined) return [];
       if (f.kind === 'number') return [`${f.name} ${String(value).replace('-', '−')}\u00a0${f.unit}`];
       if (f.kind === 'choice')
-        return [
-          `${f.name.toLowerCase()} ${f.options.find((o) => o.value === value)?.words ?? String(value)}`,
-        ];
+        return [`${f.name}: ${f.options.find((o) => o.value === value)?.words ?? String(value)}`];
       return [`${f.name}: ${connectors.find((c) => c.id === value)?.name ?? 'a type that is gone'}`];
     })
     .join(', ');

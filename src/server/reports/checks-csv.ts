@@ -2,7 +2,8 @@ import { checkContext, standingOf } from '../../domain/commissioning/checks/cont
 import { judgeCheck } from '../../domain/commissioning/checks/judge';
 import { checksFor } from '../../domain/commissioning/checks/list';
 import { signOffState } from '../../domain/commissioning/checks/sign-off';
-import { KIND_WORDS, STAGE_WORDS } from '../../domain/commissioning/readings/stages';
+import { judgedNow } from '../../domain/commissioning/readings/judged-now';
+import { STAGE_WORDS } from '../../domain/commissioning/readings/stages';
 import type { CaptureSnapshot, CaptureString } from '../../schemas/api/capture';
 import { csvResponse } from './csv';
 
@@ -20,8 +21,8 @@ function figureWords(
       if (value === undefined) return [];
       if (f.kind === 'number') return [`${f.name} ${value} ${f.unit}`];
       if (f.kind === 'choice')
-        return [`${f.name} ${f.options.find((o) => o.value === value)?.words ?? value}`];
-      return [`${f.name} ${sheet.connectors.find((c) => c.id === value)?.name ?? value}`];
+        return [`${f.name}: ${f.options.find((o) => o.value === value)?.words ?? value}`];
+      return [`${f.name}: ${sheet.connectors.find((c) => c.id === value)?.name ?? value}`];
     })
     .join('; ');
 }
@@ -70,11 +71,18 @@ export function readingsCsv(sheet: CaptureSnapshot): Response {
   interface Row {
     string: CaptureString;
     reading: CaptureString['readings'][number] | null;
+    finding: CaptureString['readings'][number]['finding'];
   }
   const rows = sheet.strings.flatMap((string): Row[] =>
     string.readings.length === 0
-      ? [{ string, reading: null }]
-      : string.readings.map((reading) => ({ string, reading })),
+      ? [{ string, reading: null, finding: null }]
+      : string.readings.map((reading) => ({
+          string,
+          reading,
+          // the first of two readings to earth says nothing until the other is there
+          finding:
+            reading.kind === 'positive_to_negative' ? reading.finding : judgedNow(sheet, string.id, reading),
+        })),
   );
   const rounded = (v: number | null | undefined): number | null =>
     v === null || v === undefined ? null : Number(v.toFixed(2));
@@ -84,16 +92,19 @@ export function readingsCsv(sheet: CaptureSnapshot): Response {
       { header: 'string', value: (r) => r.string.name },
       { header: 'units', value: (r) => r.string.units },
       { header: 'stage', value: (r) => (r.reading ? STAGE_WORDS[r.reading.stage] : 'not read') },
-      { header: 'between', value: (r) => r.reading && KIND_WORDS[r.reading.kind] },
+      { header: 'between', value: (r) => r.reading?.kind.replaceAll('_', ' ') },
       { header: 'voltage (V)', value: (r) => rounded(r.reading?.voltage) },
-      { header: 'expected from (V)', value: (r) => rounded(r.reading?.finding?.expectedLowV) },
-      { header: 'expected to (V)', value: (r) => rounded(r.reading?.finding?.expectedHighV) },
-      { header: 'outcome', value: (r) => r.reading?.finding?.outcome.replace('_', ' ') },
-      { header: 'what it means', value: (r) => r.reading?.finding?.headline },
+      { header: 'expected from (V)', value: (r) => rounded(r.finding?.expectedLowV) },
+      { header: 'expected to (V)', value: (r) => rounded(r.finding?.expectedHighV) },
+      {
+        header: 'outcome',
+        value: (r) => r.finding?.outcome.replace('_', ' ').replace('cant tell', 'can’t tell'),
+      },
+      { header: 'what it means', value: (r) => r.finding?.headline },
       { header: 'light', value: (r) => r.reading?.light },
       { header: 'commanded', value: (r) => r.reading?.commanded },
-      { header: 'units heard', value: (r) => r.reading?.finding?.heard },
-      { header: 'strings compared with', value: (r) => r.reading?.finding?.siblings.join(', ') },
+      { header: 'units heard', value: (r) => r.finding?.heard },
+      { header: 'strings compared with', value: (r) => r.finding?.siblings.join(', ') },
       { header: 'note', value: (r) => r.reading?.note },
       { header: 'person', value: (r) => r.reading?.person },
       { header: 'time (UTC)', value: (r) => r.reading && new Date(r.reading.at) },

@@ -50,7 +50,14 @@ export const CHECKS: readonly CheckDefinition[] = [
     how: 'Look at every unit before the module goes down: water must not run along a lead into the housing.',
     source: PRACTICE,
     phase: 'mounting',
-    figures: [choice('leads', 'Leads leave', { down: 'downwards', side: 'to a side', up: 'upwards' }, false)],
+    figures: [
+      choice(
+        'leads',
+        'Direction of the leads',
+        { down: 'downwards', side: 'to a side', up: 'upwards' },
+        false,
+      ),
+    ],
     mayFollow: false,
   },
   {
@@ -63,7 +70,7 @@ export const CHECKS: readonly CheckDefinition[] = [
     figures: [
       choice(
         'face',
-        'The label looks',
+        'Direction of the label',
         { label_out: 'away from the back sheet', label_in: 'at the back sheet' },
         false,
       ),
@@ -171,7 +178,7 @@ export const CHECKS: readonly CheckDefinition[] = [
       number('resistance', 'Resistance', 'MΩ', 0, 100_000, true),
       choice(
         'unitsState',
-        'The units were',
+        'State of the units',
         { passing: 'passing', shutdown: 'in shutdown', bypassed: 'not in the circuit' },
         true,
       ),
@@ -189,7 +196,7 @@ export const CHECKS: readonly CheckDefinition[] = [
       number('current', 'Current', 'A', -100, 100, true),
       choice(
         'method',
-        'Measured',
+        'Method',
         { operating: 'in operation', short_circuit: 'as short-circuit current' },
         true,
       ),
