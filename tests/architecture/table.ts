@@ -30,6 +30,7 @@ export const FEATURES = [
   'checks',
   'letters',
   'capture',
+  'as-built',
   'import',
   'serials',
   'roof',
