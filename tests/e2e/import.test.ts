@@ -20,7 +20,9 @@ let browser: Browser;
 let folder: string;
 let url: string;
 let site: string;
-const SEEN = 'UN-K2-6';
+/** Serials of this run: a unit sits in one place, and a site that was used before has its own. */
+const RUN = `R${String(Date.now()).slice(-7)}`;
+const SEEN = `${RUN}-K2-6`;
 
 /** What the camera sees: one label, for as long as it looks. */
 async function labelFilm(text: string): Promise<string> {
@@ -140,10 +142,10 @@ describe('strings and serials from a file', () => {
     const rows = ['Strang;Pos.;Seriennummer;Dachfläche;MPPT;x'];
     for (let i = 1; i <= 6; i++)
       rows.push(
-        `${i === 1 ? 'K1' : ''};${i === 5 ? 4 : i};${i === 3 ? 'UN:K1:3' : `UN-K1-${i}`};Süd;1;${i},5`,
+        `${i === 1 ? 'K1' : ''};${i === 5 ? 4 : i};${i === 3 ? `${RUN}:K1:3` : `${RUN}-K1-${i}`};Süd;1;${i},5`,
       );
     for (let i = 1; i <= 6; i++)
-      rows.push(`${i === 1 ? 'K2' : ''};${i};${i > 4 ? '' : `UN-K2-${i}`};Süd;2;${i},5`);
+      rows.push(`${i === 1 ? 'K2' : ''};${i};${i > 4 ? '' : `${RUN}-K2-${i}`};Süd;2;${i},5`);
     const bytes = Buffer.from(rows.join('\r\n'), 'latin1');
     await page
       .getByLabel('A file: CSV or tab-separated')
@@ -156,7 +158,7 @@ describe('strings and serials from a file', () => {
     await page.getByLabel('Module type', { exact: true }).selectOption('Mono 430, 108 half cells');
     await eventually(() => page.locator('h1').innerText()).toMatch(/^\d cells of 12 rows need a look/);
     expect(await axeFaults(page)).toEqual([]);
-    await page.getByRole('button', { name: 'Write UN-K1-3' }).click();
+    await page.getByRole('button', { name: `Write ${RUN}-K1-3` }).click();
     await page.getByLabel('Cell in row 6, position').fill('5');
     await page.getByLabel('Cell in row 6, position').press('Enter');
 
@@ -167,12 +169,12 @@ describe('strings and serials from a file', () => {
     expect(await axeFaults(page)).toEqual([]);
     await page.getByRole('button', { name: 'Import 12 rows' }).click();
     await eventually(() => page.locator('h1').innerText()).toBe('12 rows are in the as-built');
-    expect(await serialsOf(page.request, 'K1')).toEqual([1, 2, 3, 4, 5, 6].map((n) => `UN-K1-${n}`));
+    expect(await serialsOf(page.request, 'K1')).toEqual([1, 2, 3, 4, 5, 6].map((n) => `${RUN}-K1-${n}`));
     expect(await serialsOf(page.request, 'K2')).toEqual([
-      'UN-K2-1',
-      'UN-K2-2',
-      'UN-K2-3',
-      'UN-K2-4',
+      `${RUN}-K2-1`,
+      `${RUN}-K2-2`,
+      `${RUN}-K2-3`,
+      `${RUN}-K2-4`,
       null,
       null,
     ]);
@@ -223,21 +225,21 @@ describe('serials on the roof', () => {
     await hydrated(page);
     expect(await page.locator('h1').innerText()).toBe('K2, position 5 of 6');
     const field = page.getByLabel('Serial', { exact: true });
-    await field.fill('UN-K1-1');
+    await field.fill(`${RUN}-K1-1`);
     await page.getByRole('button', { name: 'Save and go on' }).tap();
-    await page.getByText('UN-K1-1 is entered at K1, position 1.').waitFor();
+    await page.getByText(`${RUN}-K1-1 is entered at K1, position 1.`).waitFor();
     expect(await axeFaults(page)).toEqual([]);
 
     await phone.setOffline(true);
-    await field.fill('un-k2-5');
+    await field.fill(`${RUN}-k2-5`.toLowerCase());
     await page.getByRole('button', { name: 'Save and go on' }).tap();
     await eventually(() => page.locator('h1').innerText()).toBe('K2, position 6 of 6');
     await page.getByText('1 serial waits on this phone').waitFor();
-    expect(await serialsOf(page.request, 'K2').catch(() => [])).toEqual([]);
+    expect((await serialsOf(page.request, 'K2'))[4]).toBeNull();
     await phone.setOffline(false);
     await page.reload();
     await hydrated(page);
-    await eventually(() => serialsOf(page.request, 'K2')).toContain('UN-K2-5');
+    await eventually(() => serialsOf(page.request, 'K2')).toContain(`${RUN}-K2-5`);
 
     await page.getByRole('button', { name: 'Read with the camera' }).tap();
     await eventually(() => field.inputValue()).toBe(SEEN);
@@ -265,17 +267,18 @@ describe('serials on the roof', () => {
     await hydrated(page);
     const response = await theirs.request.post(`${url}/api/sites/${site}/placements`, {
       headers: { origin: url },
-      data: { changes: [{ slot: { string: k2, position: 6 }, serial: 'UN-THEIRS' }], reason: '' },
+      data: { changes: [{ slot: { string: k2, position: 6 }, serial: `${RUN}-THEIRS` }], reason: '' },
     });
     expect(response.ok()).toBe(true);
-    await page.getByLabel('Serial', { exact: true }).fill('UN-MINE');
+    await page.getByRole('button', { name: /^Position 6:/ }).tap();
+    await page.getByLabel('Serial', { exact: true }).fill(`${RUN}-MINE`);
     await page.getByRole('button', { name: 'Save and go on' }).tap();
-    await page.getByText('UN-MINE at K2, position 6 was not kept.').waitFor();
-    await page.getByText('UN-THEIRS').first().waitFor();
+    await page.getByText(`${RUN}-MINE at K2, position 6 was not kept.`).waitFor();
+    await page.getByText(`${RUN}-THEIRS`).first().waitFor();
     expect(await axeFaults(page)).toEqual([]);
     await page.getByLabel('Why yours is right').fill('Read twice');
-    await page.getByRole('button', { name: 'Put UN-MINE there' }).tap();
-    await eventually(async () => (await serialsOf(page.request, 'K2'))[5]).toBe('UN-MINE');
+    await page.getByRole('button', { name: `Put ${RUN}-MINE there` }).tap();
+    await eventually(async () => (await serialsOf(page.request, 'K2'))[5]).toBe(`${RUN}-MINE`);
     await Promise.all([mine.close(), theirs.close()]);
   });
 });
