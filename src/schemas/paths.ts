@@ -88,6 +88,7 @@ export const paths = {
     equipmentImport: (family: EquipmentFamily) => `/api/equipment/${family}/import`,
     connectorPairs: () => '/api/equipment/connector-pairs',
     connectorPair: (pair: string) => `/api/equipment/connector-pairs/${pair}`,
+    connectorPairFiles: (pair: string) => `/api/equipment/connector-pairs/${pair}/files`,
     designChecksCsv: (site: string) => `/api/sites/${site}/design.csv`,
     sites: () => '/api/sites',
     asBuilt: (site: string) => `/api/sites/${site}/as-built`,

@@ -59,11 +59,21 @@ export const DESIGN_AND_EQUIPMENT: readonly Route[] = [
     served: [422],
   },
   {
-    file: 'api/equipment/connector-pairs/[pair].ts',
+    file: 'api/equipment/connector-pairs/[pair]/index.ts',
     method: 'DELETE',
     permission: 'connector_evidence.record',
     of: 'nothing',
     path: () => '/api/equipment/connector-pairs/00000000-0000-4000-8000-000000000000',
+    served: [404],
+  },
+  {
+    file: 'api/equipment/connector-pairs/[pair]/files.ts',
+    method: 'POST',
+    permission: 'connector_evidence.record',
+    of: 'nothing',
+    path: () =>
+      '/api/equipment/connector-pairs/00000000-0000-4000-8000-000000000000/files?ref=00000000-0000-4000-8000-000000000003&name=x.pdf',
+    body: {},
     served: [404],
   },
   get('api/sites/[site]/design.csv.ts', 'as_built.read', 'site', (t) => `/api/sites/${t.site}/design.csv`),

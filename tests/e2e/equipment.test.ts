@@ -242,12 +242,22 @@ describe('design checks', () => {
     await dialog.getByLabel('Document').fill('Joint statement of both makers');
     await dialog.getByLabel('Edition or date').fill('edition 2');
     await dialog.getByLabel('Page or table').fill('page 4');
+    const evidence = (name: string, body: string) =>
+      dialog
+        .getByLabel('The document itself')
+        .setInputFiles({ name, mimeType: 'application/pdf', buffer: Buffer.from(body) });
+    await evidence('statement.pdf', '<html>not what its name says</html>');
     await faultless(page);
     await dialog.getByRole('button', { name: 'Record the pair' }).click();
+    await dialog.getByText('The pair is recorded, its document is not here yet').waitFor();
+    await dialog.getByText('This is a web page, whatever its name says').waitFor();
+    await evidence('statement.pdf', '%PDF-1.4\n%%EOF\n');
+    await dialog.getByRole('button', { name: 'Send the document again' }).click();
     await page
       .getByText('Joint statement of both makers, edition 2, page 4')
       .locator('visible=true')
       .waitFor();
+    await page.getByRole('link', { name: 'statement.pdf' }).waitFor();
     await page.close();
 
     const after = await open('technician', path());

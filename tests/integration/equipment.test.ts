@@ -1,3 +1,4 @@
+import { randomUUID } from 'node:crypto';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import type { Actor } from '../../src/domain/access/permissions';
 import type { EquipmentFamily } from '../../src/domain/equipment/families';
@@ -10,6 +11,8 @@ import {
 } from '../../src/pages/api/equipment/[family]/[type]';
 import { POST as importRoute } from '../../src/pages/api/equipment/[family]/import';
 import { DELETE as endRoute } from '../../src/pages/api/equipment/connector-pairs/[pair]';
+import { POST as filesRoute } from '../../src/pages/api/equipment/connector-pairs/[pair]/files';
+import { GET as fileRoute } from '../../src/pages/api/attachments/[attachment]';
 import { POST as pairRoute } from '../../src/pages/api/equipment/connector-pairs';
 import {
   catalogue,
@@ -367,6 +370,33 @@ describe('documented pairs', () => {
     expect((await end()).status).toBe(404);
     expect((await record('Oxbow 30')).status).toBe(200);
     expect((await list('connectors', stranger)).pairs.map((p) => p.id)).not.toContain(id);
+  });
+  it('keep the document that they rest on, once, for the organisation alone', async () => {
+    const pair = (await list('connectors')).pairs.find((p) => p.endedAt === null);
+    if (!pair) throw new Error('no pair is in force');
+    const ref = randomUUID();
+    const pdf = '%PDF-1.4\n1 0 obj\n<<>>\nendobj\ntrailer\n<<>>\n%%EOF\n';
+    const send = (actor: Actor, body: string, name = 'statement.pdf') =>
+      ask(filesRoute, {
+        actor,
+        params: { pair: pair.id },
+        path: `/api/x?ref=${ref}&name=${name}`,
+        method: 'POST',
+        body,
+      });
+    expect((await send(technician, pdf)).status).toBe(403);
+    expect((await send(stranger, pdf)).status).toBe(404);
+    const html = await send(manager, '<!doctype html><p>not a document</p>', 'statement.jpg');
+    expect(html.status).toBe(422);
+    expect((await problem(html)).detail).toMatch(/web page, whatever its name says/);
+    expect((await send(manager, pdf)).status).toBe(201);
+    expect((await send(manager, pdf)).status).toBe(200);
+    expect((await send(manager, `${pdf}another`)).status).toBe(409);
+    const seen = (await list('connectors')).pairs.find((p) => p.id === pair.id);
+    expect(seen?.files).toEqual([{ id: ref, name: 'statement.pdf' }]);
+    const read = (actor: Actor) => ask(fileRoute, { actor, params: { attachment: ref } });
+    expect(await (await read(technician)).text()).toBe(pdf);
+    expect((await read(stranger)).status).toBe(404);
   });
   it('need two different types', async () => {
     const response = await record('Halyard 4');

@@ -3,7 +3,8 @@ import { Button } from '../../components/ui/Button';
 import { Field } from '../../components/ui/Field';
 import { Notice } from '../../components/ui/Notice';
 import { SelectField } from '../../components/ui/SelectField';
-import { ApiError, api } from '../../lib/api';
+import { ApiError, api, withQuery } from '../../lib/api';
+import { uploadFile } from '../../lib/upload';
 import { pairInput, type ConnectorItem } from '../../schemas/api/equipment';
 import { paths } from '../../schemas/paths';
 
@@ -21,6 +22,11 @@ export function PairForm({ connectors, onDone }: Props) {
   const [faults, setFaults] = useState<Partial<Record<keyof Typed, string>>>({});
   const [failed, setFailed] = useState<string | null>(null);
   const [busy, setBusy] = useState(false);
+  const [file, setFile] = useState<File | null>(null);
+  /** Share of the file that is sent. */
+  const [sent, setSent] = useState<number | null>(null);
+  /** The pair that was recorded while its file is not there yet, and the file's identifier. */
+  const [recorded, setRecorded] = useState<{ id: string; ref: string } | null>(null);
   const set = (key: keyof Typed) => (value: string) => setTyped((old) => ({ ...old, [key]: value }));
   const options = [
     { value: '', label: 'Choose' },
@@ -44,13 +50,22 @@ export function PairForm({ connectors, onDone }: Props) {
     setBusy(true);
     setFailed(null);
     try {
-      await api(paths.api.connectorPairs(), { method: 'POST', body: read.data });
+      const pair = recorded ?? {
+        id: (await api<{ id: string }>(paths.api.connectorPairs(), { method: 'POST', body: read.data })).id,
+        ref: crypto.randomUUID(),
+      };
+      setRecorded(pair);
+      if (file) {
+        const path = withQuery(paths.api.connectorPairFiles(pair.id), { ref: pair.ref, name: file.name });
+        await uploadFile(path, file, setSent);
+      }
       onDone();
     } catch (error) {
       if (!(error instanceof ApiError)) throw error;
       setFaults(Object.fromEntries(error.fields.map((f) => [f.field.replace(/^body\./, ''), f.message])));
       setFailed(error.message);
       setBusy(false);
+      setSent(null);
     }
   };
   const text = (key: 'document' | 'edition' | 'page' | 'note', label: string, hint?: string) => (
@@ -94,14 +109,44 @@ export function PairForm({ connectors, onDone }: Props) {
       {text('edition', 'Edition or date')}
       {text('page', 'Page or table')}
       {text('note', 'Note', 'Conditions that it names: cable, tool, temperature.')}
+      <div>
+        <label htmlFor="evidence" className="mb-1 block font-medium">
+          The document itself
+        </label>
+        <input
+          id="evidence"
+          type="file"
+          accept="application/pdf,image/jpeg,image/png,image/webp"
+          aria-describedby="evidence-hint"
+          className="target w-full text-[15px]"
+          onChange={(event) => {
+            setFile(event.target.files?.[0] ?? null);
+            setRecorded((old) => old && { ...old, ref: crypto.randomUUID() });
+          }}
+        />
+        <p id="evidence-hint" className="mt-1 text-sm text-ink-2">
+          A PDF or a picture, at most 25 MB. Without it the record says only where to find it.
+        </p>
+      </div>
       {failed && (
-        <Notice kind="failed" title="Not recorded">
+        <Notice
+          kind="failed"
+          title={recorded ? 'The pair is recorded, its document is not here yet' : 'Not recorded'}
+        >
           {failed}
         </Notice>
       )}
-      <Button weight="primary" type="submit" disabled={busy}>
-        {busy ? 'Recording…' : 'Record the pair'}
-      </Button>
+      {sent !== null && (
+        <p role="status">
+          {sent < 1 ? `Sending the document: ${Math.round(100 * sent)} %` : 'The document is being read…'}
+        </p>
+      )}
+      <div className="flex flex-wrap gap-2">
+        <Button weight="primary" type="submit" disabled={busy || (recorded !== null && !file)}>
+          {busy ? 'Recording…' : recorded ? 'Send the document again' : 'Record the pair'}
+        </Button>
+        {recorded && !busy && <Button onClick={onDone}>Leave it without</Button>}
+      </div>
     </form>
   );
 }

@@ -8,6 +8,12 @@ export const familyParams = z.object({ family: z.enum(EQUIPMENT_FAMILIES) });
 export const typeParams = z.object({ family: z.enum(EQUIPMENT_FAMILIES), type: id });
 export const pairParams = z.object({ pair: id });
 
+/** A document that a pair rests on: its bytes are the body. */
+export const evidenceQuery = z.strictObject({
+  ref: id, // made by the browser: sent again after a broken upload is stored once
+  name: z.string().trim().min(1, 'Give the file a name.').max(200, 'At most 200 characters.'),
+});
+
 export const ARCHIVED_SHOWS = ['in_use', 'all', 'archived'] as const;
 
 /** What a list of the catalogue shows, as it stands in the address. What an old link gets wrong falls back. */

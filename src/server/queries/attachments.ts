@@ -67,7 +67,8 @@ export async function attachmentBytes(
 export interface NewAttachment {
   ref: string;
   organisationId: number;
-  siteId: number;
+  /** null: it belongs to the organisation, as evidence for a pair of connectors does. */
+  siteId: number | null;
   stringId: number | null;
   subject: string;
   subjectRef: string | null;

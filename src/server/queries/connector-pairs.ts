@@ -58,3 +58,13 @@ export async function endPair(
   );
   return rows[0];
 }
+
+/** The organisation of a pair that the actor may see; undefined for every other. */
+export async function pairOrganisation(tx: Tx, ref: string): Promise<number | undefined> {
+  const { rows } = await tx.raw<{ rows: { organisationId: number }[] }>(
+    `select organisation_id as "organisationId" from connector_pair
+     where ref = :ref and organisation_id = (select actor_organisation())`,
+    { ref },
+  );
+  return rows[0]?.organisationId;
+}

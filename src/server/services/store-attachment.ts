@@ -38,6 +38,17 @@ export async function receiveFile(
   query: AttachmentQuery,
 ): Promise<ReceivedFile> {
   await asActor(actor, async (tx) => found(await visibleSite(tx, siteRef), 'site'));
+  return readReceived(request, query);
+}
+
+/**
+ * The body as a photo, or as a document where it is evidence for a pair of connectors.
+ * @throws AppError too_large · invalid (what it is instead, and what to do)
+ */
+export function readReceived(
+  request: Request,
+  query: Pick<AttachmentQuery, 'name' | 'subject' | 'keepPlace'>,
+): Promise<ReceivedFile> {
   return spooled(request, PHOTO_MAX_BYTES, async (file) => {
     const { kind, fault } = sniff(file.head);
     if (kind === null) throw refused(`${query.name}: ${fault}`);
