@@ -70,6 +70,12 @@ const LOCK = 'wakeline-capture-send';
 const LOOK_AGAIN_MS = 5000;
 const FRESH_MS = 60_000;
 
+/** Asks the browser not to clear what waits when the device runs short of room; it may say no. */
+function askToLast(): void {
+  const storage = (navigator as Partial<Pick<Navigator, 'storage'>>).storage;
+  storage?.persist().catch(() => undefined); // without it everything works, with a little less certainty
+}
+
 export class CapturePhone {
   private state: PhoneState;
   private keeper: Keeper | null = null;
@@ -111,6 +117,7 @@ export class CapturePhone {
   /** Keeps records on the phone and starts to send them. @throws StoreError when they could not be kept */
   async add(records: readonly NewRecord[], photos?: ReadonlyMap<string, KeptPhoto>): Promise<void> {
     await this.kept((keeper) => keeper.add(records, photos));
+    askToLast();
     void this.send();
   }
   /** Writes a decision on records that wanted one. @throws StoreError */
@@ -313,6 +320,7 @@ export class CapturePhone {
     if (!keeper) throw explainStore(new DOMException('no keeper', 'InvalidStateError'));
     try {
       const result = await write(keeper);
+      if (keeper.lasting && this.state.fault) this.set({ fault: null });
       await this.reread();
       this.tellOthers();
       return result;

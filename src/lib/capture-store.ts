@@ -16,6 +16,8 @@ export interface KeptPhoto {
 interface KeptSnapshot {
   person: string;
   site: string;
+  /** Of the shape that this build reads: what another build kept is left alone. */
+  shape: number;
   snapshot: unknown;
 }
 interface Schema extends DBSchema {
@@ -26,6 +28,8 @@ interface Schema extends DBSchema {
 }
 const NAME = 'wakeline-capture';
 const VERSION = 1;
+/** Goes up when a snapshot's shape changes so that older code could not read it. */
+const SHAPE = 1;
 
 /** Why something could not be kept on the phone, in words for its person. */
 export class StoreError extends Error {
@@ -164,14 +168,17 @@ export class CaptureStore implements Keeper {
   }
 
   async snapshot(person: string, site: string): Promise<unknown> {
-    return (await this.run(() => this.db.get('snapshot', [person, site])))?.snapshot ?? null;
+    const kept = await this.run(() => this.db.get('snapshot', [person, site]));
+    return kept?.shape === SHAPE ? kept.snapshot : null;
   }
   async snapshots(person: string): Promise<unknown[]> {
     const all = await this.run(() => this.db.getAll('snapshot'));
-    return all.filter((kept) => kept.person === person).map((kept) => kept.snapshot);
+    return all.filter((kept) => kept.person === person && kept.shape === SHAPE).map((kept) => kept.snapshot);
   }
   async keepSnapshot(person: string, site: string, snapshot: unknown): Promise<void> {
-    await this.write(['snapshot'], (tx) => tx.objectStore('snapshot').put({ person, site, snapshot }));
+    await this.write(['snapshot'], (tx) =>
+      tx.objectStore('snapshot').put({ person, site, shape: SHAPE, snapshot }),
+    );
   }
 
   async here(): Promise<Here | null> {

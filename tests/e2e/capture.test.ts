@@ -326,6 +326,32 @@ describe('a technician on the roof', () => {
     await context.close();
   });
 
+  it('is told when the phone is full, and when it keeps nothing at all; what is typed stands', async () => {
+    await open('technician', { serviceWorkers: 'block' });
+    const clinic = fleet.site(CLINIC);
+    const at = `${site.url}/capture/${clinic.ref}?string=${clinic.strings.get('A3')!.ref}`;
+    await page.addInitScript(() => {
+      IDBObjectStore.prototype.add = () => {
+        throw new DOMException('no room', 'QuotaExceededError');
+      };
+    });
+    await page.goto(at);
+    await press(page, '455');
+    await page.getByRole('button', { name: 'Save and go to A4' }).tap();
+    await expect.poll(() => words(page)).toContain('The phone has no room left for this');
+    expect(await page.getByLabel('Reading + to −, volts').inputValue()).toBe('455');
+    await page.close();
+
+    page = await context.newPage();
+    await page.addInitScript(() => Object.defineProperty(window, 'indexedDB', { value: undefined }));
+    await page.goto(at);
+    await expect.poll(() => words(page)).toContain('This browser keeps nothing here');
+    await press(page, '456');
+    await page.getByRole('button', { name: 'Save and go to A4' }).tap();
+    await expect.poll(() => count('meter_reading')).toBe(1); // with a network it is sent all the same
+    await context.close();
+  });
+
   it('signs the checks off when nothing blocks, with a network only', async () => {
     await open('technician', { colorScheme: 'dark' });
     const clinic = fleet.site(CLINIC);
