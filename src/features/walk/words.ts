@@ -1,4 +1,4 @@
-import { planeWords } from './plane-words';
+import { planeWords } from '../../domain/output/plane-words';
 import { countAtStart, listed } from '../../drawings/numbers';
 import type { WalkPage } from '../../schemas/api/walk';
 import type { Stop, StopKind } from './stops';

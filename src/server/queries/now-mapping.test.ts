@@ -1,6 +1,7 @@
 import { describe, expect, it } from 'vitest';
 import { stringNow } from '../../schemas/api/now';
-import { commandOf, findingWords, mapStrings, planeWords } from './now-mapping';
+import { planeWords } from '../../domain/output/plane-words';
+import { commandOf, findingWords, mapStrings } from './now-mapping';
 import type { SaidRow, SiteRow, StringRow } from './now-rows';
 
 const NOON = new Date('2026-06-21T12:00:00Z');

@@ -1,5 +1,6 @@
 import type { ModuleType } from '../../domain/equipment/module-type';
 import { expectedBand, expectedModule, type Expected, type ExpectedFrom } from '../../domain/output/expected';
+import { planeWords } from '../../domain/output/plane-words';
 import { median } from '../../domain/output/robust';
 import { clearSkyInPlane } from '../../domain/photovoltaics/irradiance/clear-sky-plane';
 import { UNIT_STATES, VERDICTS, type StringFinding } from '../../domain/verdicts/codes';
@@ -76,10 +77,6 @@ const FROM_WORDS: Record<ExpectedFrom, (plane: string) => string> = {
   sensor: () => 'the irradiance sensor and the module’s datasheet',
   clear_sky: () => 'a clear sky and the module’s datasheet',
 };
-/** "South roof" → "south roof", in the middle of a sentence; "PV2" stays. */
-export const planeWords = (name: string): string =>
-  /^[A-Z][a-z]/.test(name) ? name.charAt(0).toLowerCase() + name.slice(1) : name;
-
 interface Measured {
   row: StringRow;
   slots: SlotNow[];

@@ -14,7 +14,7 @@ import type {
 } from '../../schemas/api/string';
 import type { Tx } from '../db/transaction';
 import { AppError } from '../errors';
-import { planeWords } from '../queries/now-mapping';
+import { planeWords } from '../../domain/output/plane-words';
 import { siblingsOf, stringFacts, type StringFacts } from '../queries/string-facts';
 import {
   commandsOfZone,

@@ -3,7 +3,7 @@ import type { StringNow } from '../../schemas/api/now';
 import type { StringPage } from '../../schemas/api/string';
 import type { Tx } from '../db/transaction';
 import { stringsNow } from '../queries/now';
-import { planeWords } from '../queries/now-mapping';
+import { planeWords } from '../../domain/output/plane-words';
 import { siblingsOf, stringFacts, stringNames, type StringFacts } from '../queries/string-facts';
 import { dayBounds, energyAgainst, eventsOfString } from '../queries/string-history';
 import { noSuchString } from './string-history';
