@@ -33,8 +33,8 @@ export interface Running {
   stop(): Promise<void>;
 }
 
-/** No endpoint reads more; what reads less says so itself (http/body.ts). */
-const REQUEST_MAX_BYTES = 1024 * 1024;
+/** No endpoint reads more, photos included; what reads less says so itself (http/body.ts, files/spooled.ts). */
+const REQUEST_MAX_BYTES = 32 * 1024 * 1024;
 
 /** An answer without Astro: a problem document for the API, a line of text for a browser. */
 function answer(req: IncomingMessage, res: ServerResponse, status: number, message: string): void {
