@@ -33,7 +33,7 @@ export interface Running {
   stop(): Promise<void>;
 }
 
-/** No endpoint reads more, photos included; what reads less says so itself (http/body.ts, files/spooled.ts). */
+/** No endpoint reads more, photos included; what reads less says so itself (http/body.ts, files/spool.ts). */
 const REQUEST_MAX_BYTES = 32 * 1024 * 1024;
 
 /** An answer without Astro: a problem document for the API, a line of text for a browser. */
