@@ -61,6 +61,11 @@ const LATE_BY_A_DAY =
 const WOBBLE =
   'The tracker wobbles and modules warm while the inverter is read up to 20 s after the units: three days leave some 0.04 Ω of error, and what is not clear is left unsaid or called not to be told.';
 
+say(
+  seeds === 'held_out'
+    ? '# Plants that the judgements were not developed on (--seeds developed: the others).'
+    : '# Plants that the judgements were developed on (--seeds held_out: the others).',
+);
 const conductDays = Math.max(1, Math.round(days / 3));
 const conduct = newConductScore();
 for (let n = 0; n < conductDays; n++) {
