@@ -4,6 +4,7 @@ import type { Actor } from '../../src/domain/access/permissions';
 import { readingInput, readingRecord, type ReadingInput } from '../../src/schemas/api/readings';
 import { asActor } from '../../src/server/db/transaction';
 import { AppError } from '../../src/server/errors';
+import { commissioningFacts } from '../../src/server/queries/commissioning-facts';
 import { recordReading } from '../../src/server/services/record-reading';
 import { testDatabase, type TestDatabase } from '../support/database';
 import { testFleet, type TestFleet } from '../support/fleet';
@@ -160,6 +161,10 @@ describe('a meter reading', () => {
     });
     expect(negative.record.finding).toMatchObject({ outcome: 'finding', earth: { outcome: 'fault' } });
     expect(negative.record.finding?.headline).toContain('Do not connect');
+    // the step counts the string as amiss, though + to − alone was as expected
+    const siteId = fleet.site(HALL).id;
+    const facts = await asActor(technician, (tx) => commissioningFacts(tx, [siteId]));
+    expect(facts.get(siteId)?.strings.find((s) => s.name === b1.name)?.reading).toBe('finding');
   });
 
   it('is stored once, clashes with what somebody else took meanwhile, and refuses future times', async () => {

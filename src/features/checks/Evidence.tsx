@@ -2,21 +2,29 @@ import { useState } from 'react';
 import { Button } from '../../components/ui/Button';
 import { Field } from '../../components/ui/Field';
 import { Notice } from '../../components/ui/Notice';
-import { ApiError, api } from '../../lib/api';
+import { ApiError, api, withQuery } from '../../lib/api';
+import { newRef } from '../../lib/capture-records';
+import { uploadFile } from '../../lib/upload';
+import { PHOTO_TYPES, type AttachmentItem } from '../../schemas/api/attachments';
 import type { PairInput } from '../../schemas/api/equipment';
 import { paths } from '../../schemas/paths';
 
 interface Props {
+  /** Of the site where the pair was found: the document is kept with it. */
+  site: string;
   pair: { first: string; second: string; words: string };
   onRecorded: () => Promise<unknown>;
 }
 
 /** A manager names the document that says that two different connector types may be mated. */
-export function Evidence({ pair, onRecorded }: Props) {
+export function Evidence({ site, pair, onRecorded }: Props) {
   const [open, setOpen] = useState(false);
   const [form, setForm] = useState({ document: '', edition: '', page: '', note: '' });
   const [refused, setRefused] = useState<ApiError | null>(null);
   const [busy, setBusy] = useState(false);
+  const [file, setFile] = useState<File | null>(null);
+  /** The pair is recorded; only its document is still to be sent. */
+  const [recorded, setRecorded] = useState<string | null>(null);
   if (!open)
     return (
       <div className="mt-2">
@@ -37,7 +45,23 @@ export function Evidence({ pair, onRecorded }: Props) {
     setRefused(null);
     try {
       const body: PairInput = { first: pair.first, second: pair.second, ...form };
-      await api(paths.api.connectorPairs(), { method: 'POST', body });
+      const id =
+        recorded ?? (await api<{ id: string }>(paths.api.connectorPairs(), { method: 'POST', body })).id;
+      setRecorded(id);
+      if (file) {
+        const query = {
+          ref: newRef(),
+          subject: 'connector_pair',
+          subjectRef: id,
+          name: file.name.slice(0, 200) || 'Document',
+          at: new Date().toISOString(),
+        };
+        await uploadFile<AttachmentItem>(
+          withQuery(paths.api.attachments(site), query),
+          file,
+          () => undefined,
+        );
+      }
       await onRecorded();
     } catch (error) {
       if (!(error instanceof ApiError)) throw error;
@@ -65,8 +89,21 @@ export function Evidence({ pair, onRecorded }: Props) {
         {field('page', 'Page or table')}
       </div>
       {field('note', 'Note')}
+      <label className="block">
+        <span className="mb-1 block font-medium">The document itself, as PDF or picture</span>
+        <input
+          type="file"
+          accept={`application/pdf,${PHOTO_TYPES}`}
+          className="min-h-[44px] w-full text-[15px]"
+          onChange={(event) => setFile(event.target.files?.[0] ?? null)}
+        />
+      </label>
       {refused && (
-        <Notice kind="failed" title="Not recorded">
+        <Notice
+          kind="failed"
+          title={recorded ? 'The pair is recorded, its document is not' : 'Not recorded'}
+          action={recorded && <Button onClick={() => void onRecorded()}>Leave the document out</Button>}
+        >
           {refused.message}
         </Notice>
       )}

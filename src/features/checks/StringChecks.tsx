@@ -152,7 +152,7 @@ function CheckItem({
             now={page.sheet.at}
             timeZone={site.timeZone}
           />
-          {pair && mayRecordEvidence && <Evidence pair={pair} onRecorded={onChanged} />}
+          {pair && mayRecordEvidence && <Evidence site={site.id} pair={pair} onRecorded={onChanged} />}
           {pair && !mayRecordEvidence && (
             <p className="mt-1 text-sm text-ink-2">
               A manager can record the document that allows this pair, if there is one.

@@ -32,9 +32,12 @@ async function stringFacts(tx: Tx, siteIds: readonly number[]): Promise<StringRo
        select distinct on (string_id) string_id, at from string_sign_off
        where site_id = any(:siteIds) order by string_id, at desc
      ), reading as (
-       select distinct on (string_id) string_id, findings ->> 'outcome' as outcome from meter_reading
-       where site_id = any(:siteIds) and reading_kind = 'positive_to_negative'
-       order by string_id, id desc
+       -- a conductor that touches earth is a finding of the string, whatever + to − says
+       select string_id, case when bool_or(outcome = 'finding') then 'finding'
+              else max(outcome) filter (where reading_kind = 'positive_to_negative') end as outcome
+       from (select distinct on (string_id, reading_kind) string_id, reading_kind, findings ->> 'outcome' as outcome
+             from meter_reading where site_id = any(:siteIds) order by string_id, reading_kind, id desc) newest_reading
+       group by string_id
      ), built as (
        select st.id, count(sl.id)::int as slots, count(p.id)::int as placed,
               count(h.serial) filter (where st.kind <> 'shutdown_only')::int as heard
