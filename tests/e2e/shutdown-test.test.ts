@@ -70,7 +70,9 @@ async function operate(open: boolean): Promise<void> {
 /** Types what the meter at the inverter's end of a home run shows. */
 async function readMeter(string: string, moment: 'before' | 'after'): Promise<void> {
   const volts = plant.truth(CLINIC).strings.find((s) => s.name === string)?.homeRun ?? 0;
-  await button(`Reading of ${string} ${moment} the command`).click();
+  await button(
+    moment === 'before' ? `Read before the command: ${string}` : `Add reading of ${string} after the command`,
+  ).click();
   const dialog = page.getByRole('dialog');
   await dialog.getByLabel('+ to −', { exact: true }).fill(volts.toFixed(1));
   await dialog.getByLabel('+ to earth', { exact: true }).fill((volts / 2).toFixed(1).replace('.', ','));

@@ -73,6 +73,14 @@ describe('the conduct of a unit', () => {
       heldAtS: 2,
     });
   });
+  it('says nothing of a return where it never went', () => {
+    const frames = [frame(-2, PASSING, 38), frame(40, PASSING, 38), frame(90, PASSING, 38)];
+    expect(run(frames, { releaseS: C + 60 }).units[0]).toMatchObject({
+      passedAtS: 40,
+      returned: null,
+      heldAtS: null,
+    });
+  });
   it('follows a trace to the second', () => {
     const unitV = [38, 38, 38, 20, 0.6, 0.6].map((v) => [v, null]);
     const trace = {

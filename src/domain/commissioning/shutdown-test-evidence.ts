@@ -168,8 +168,10 @@ function unitConduct(
   const after = seen.filter((s) => s.atS >= releaseS);
   const again = after.find((s) => s.passing);
   const held = after.findLast((s) => !s.passing && (again === undefined || s.atS < again.atS));
-  if (again !== undefined)
+  // one that never went has nothing to come back from
+  const went = conduct.followed !== null || conduct.downBefore || held !== undefined;
+  if (again !== undefined && went)
     conduct.returned = [held === undefined ? 0 : held.atS - releaseS, again.atS - releaseS];
-  else if (held !== undefined) conduct.heldAtS = held.atS - releaseS;
+  else if (again === undefined && held !== undefined) conduct.heldAtS = held.atS - releaseS;
   return conduct;
 }

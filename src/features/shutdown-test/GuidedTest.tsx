@@ -73,7 +73,7 @@ export function GuidedTest({ initial, person, mayRun }: Props) {
       <Told test={test} />
       <div className="grid gap-5 lg:grid-cols-[220px_minmax(0,1fr)]">
         <nav aria-label="Steps of the test" className="no-print">
-          <ol className="flex flex-wrap gap-x-3 lg:block">
+          <ol className="flex flex-wrap gap-x-2 lg:block">
             {steps.map((s, i) => (
               <li key={String(s.step)}>
                 <button
@@ -81,7 +81,7 @@ export function GuidedTest({ initial, person, mayRun }: Props) {
                   disabled={!s.open}
                   aria-current={s.step === step ? 'step' : undefined}
                   onClick={() => go(s.step)}
-                  className={`target inline-flex min-h-[44px] items-center gap-2 text-left disabled:text-ink-3 ${s.step === step ? 'font-semibold underline underline-offset-4' : ''}`}
+                  className={`target inline-flex min-h-[44px] min-w-[44px] items-center gap-2 text-left disabled:text-ink-3 ${s.step === step ? 'font-semibold underline underline-offset-4' : ''}`}
                 >
                   <span aria-hidden="true">{s.done ? '✓' : `${i + 1}.`}</span>
                   <span className={s.step === step ? '' : 'sr-only lg:not-sr-only'}>

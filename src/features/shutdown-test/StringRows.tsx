@@ -65,17 +65,19 @@ export function StringRows({ strings, timeLimitS, sinceS, released, mayWrite, on
         const units = s.conduct?.units.filter((u) => u.serial !== null) ?? [];
         const down = units.filter((u) => u.followed !== null || u.downBefore).length;
         const gone = units.filter((u) => u.followed !== null).length;
-        const back = units.filter((u) => u.returned !== null).length;
+        const back = units.filter((u) => u.followed !== null && u.returned !== null).length;
         return (
           <li key={s.part.id} className="border-b border-rule-faint py-2 last:border-b-0">
             <div className="flex items-center justify-between gap-3">
               <p className="text-[17px] font-semibold">{s.part.name}</p>
               {mayWrite && !released && (
-                <Button
-                  onClick={() => onRead(s, moment)}
-                  aria-label={`Reading of ${s.part.name} ${moment} the command`}
-                >
+                <Button onClick={() => onRead(s, moment)}>
                   {moment === 'before' ? 'Read before' : 'Add reading'}
+                  <span className="sr-only">
+                    {moment === 'before'
+                      ? `the command: ${s.part.name}`
+                      : `of ${s.part.name} after the command`}
+                  </span>
                 </Button>
               )}
             </div>

@@ -159,7 +159,7 @@ export const readingPoints = (strings: readonly StringNow[]) =>
 export function returnOf(seen: RoundEvidence | undefined): { back: number; held: number; gone: number } {
   const units = seen?.strings.flatMap((s) => s.units) ?? [];
   return {
-    back: units.filter((u) => u.returned !== null).length,
+    back: units.filter((u) => u.followed !== null && u.returned !== null).length,
     held: units.filter((u) => u.heldAtS !== null).length,
     gone: units.filter((u) => u.followed !== null).length,
   };
