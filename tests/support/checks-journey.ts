@@ -96,7 +96,7 @@ export async function recordEvidenceAndSign(page: Page, journey: Journey, string
   const pair = item(page, 'connectors');
   await page.getByText('a fire risk').first().waitFor();
   await pair.getByRole('button', { name: 'Record the document that allows this pair' }).click();
-  await pair.getByLabel('Document').fill('Joint declaration 12');
+  await pair.getByLabel('Document', { exact: true }).fill('Joint declaration 12');
   await pair.getByLabel('Edition or date').fill('2026-02');
   await pair.getByLabel('Page or table').fill('page 3');
   await journey.look(page, 'evidence for a pair');
