@@ -48,8 +48,38 @@ export function StepBox({ mark }: { mark: StepMark }) {
   );
 }
 
-const STATE_MARK = { done: 'full', under_way: 'half', not_started: 'none' } as const;
+export const STATE_MARK = { done: 'full', under_way: 'half', not_started: 'none' } as const;
 export const STATE_WORDS = { done: 'done', under_way: 'under way', not_started: 'not started' } as const;
+
+/** One step as a link to where it is worked on. */
+export function StepLink({
+  site,
+  step,
+  current = false,
+  className = '',
+}: {
+  site: string;
+  step: Pick<StepNow, 'key' | 'state' | 'words'>;
+  current?: boolean;
+  className?: string;
+}) {
+  return (
+    <a
+      href={STEP_PAGES[step.key](site)}
+      aria-current={current ? 'step' : undefined}
+      className={`group flex min-h-[44px] gap-3 ${className}`}
+    >
+      <StepBox mark={current ? 'now' : STATE_MARK[step.state]} />
+      <span className="min-w-0">
+        <span className={`block group-hover:underline ${current ? 'font-semibold' : 'font-medium'}`}>
+          {STEP_NAMES[step.key]}
+          <span className="sr-only">, {STATE_WORDS[step.state]}</span>
+        </span>
+        <span className="block text-sm text-ink-2">{step.words}</span>
+      </span>
+    </a>
+  );
+}
 
 interface Props {
   site: string;
