@@ -46,7 +46,13 @@ export function FaultsSheet({ faults, count, texts, edits, onEdit, by }: Props) 
   return (
     <Sheet
       id="faults"
-      title={by === 'file' ? 'Cells that need a look' : 'Cells that clash with the as-built'}
+      title={
+        by === 'as-built'
+          ? 'Cells that clash with the as-built'
+          : faults.some((f) => f.weight === 'fault')
+            ? 'Cells that need a look'
+            : 'Worth a look, and no bar to the import'
+      }
       aside={
         <button
           type="button"

@@ -95,49 +95,52 @@ export function ImportAsBuilt({ initial }: { initial: ImportPage }) {
             onImport={send}
           />
         )}
-        {checked && !outcome?.written && (
-          <DecisionsSheet
+        {/* while rows are being written nothing may change what is written */}
+        <div className="grid gap-6" inert={busy?.stop ? true : undefined}>
+          {checked && !outcome?.written && (
+            <DecisionsSheet
+              site={site}
+              names={initial.names}
+              checked={checked}
+              choices={work.choices}
+              onChoices={work.setChoices}
+            />
+          )}
+          {clashes.length > 0 && checked && (
+            <FaultsSheet
+              key="as-built"
+              by="as-built"
+              faults={clashes}
+              count={outcome?.faultCount ?? clashes.length}
+              texts={textsOf(checked, clashes)}
+              edits={work.edits}
+              onEdit={work.edit}
+            />
+          )}
+          {checked && checked.faults.length > 0 && !outcome?.written && (
+            <FaultsSheet
+              key="file"
+              by="file"
+              faults={checked.faults}
+              count={checked.faults.length}
+              texts={checked.texts}
+              edits={work.edits}
+              onEdit={work.edit}
+            />
+          )}
+          {facts && match && !outcome?.written && (
+            <ColumnsSheet facts={facts} match={match} onMatch={work.setColumn} />
+          )}
+          <FileSheet
             site={site}
-            names={initial.names}
-            checked={checked}
-            choices={work.choices}
-            onChoices={work.setChoices}
+            name={work.name}
+            facts={facts}
+            fault={work.fileFault}
+            onFile={work.takeFile}
+            onPaste={work.takeText}
+            onSplit={work.split}
           />
-        )}
-        {clashes.length > 0 && checked && (
-          <FaultsSheet
-            key="as-built"
-            by="as-built"
-            faults={clashes}
-            count={outcome?.faultCount ?? clashes.length}
-            texts={textsOf(checked, clashes)}
-            edits={work.edits}
-            onEdit={work.edit}
-          />
-        )}
-        {checked && checked.faults.length > 0 && !outcome?.written && (
-          <FaultsSheet
-            key="file"
-            by="file"
-            faults={checked.faults}
-            count={checked.faults.length}
-            texts={checked.texts}
-            edits={work.edits}
-            onEdit={work.edit}
-          />
-        )}
-        {facts && match && !outcome?.written && (
-          <ColumnsSheet facts={facts} match={match} onMatch={work.setColumn} />
-        )}
-        <FileSheet
-          site={site}
-          name={work.name}
-          facts={facts}
-          fault={work.fileFault}
-          onFile={work.takeFile}
-          onPaste={work.takeText}
-          onSplit={work.split}
-        />
+        </div>
       </div>
     </>
   );

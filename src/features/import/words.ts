@@ -55,6 +55,7 @@ export const FAULT_NAMES: Record<FaultCode, string> = {
   serial_double: 'serial twice',
   serial_elsewhere: 'serial sits elsewhere',
   serial_type: 'serial of another type',
+  serial_unlike: 'serial unlike the others',
   number_ambiguous: 'number with two meanings',
   number_fault: 'no number',
   name_unknown: 'name not known',

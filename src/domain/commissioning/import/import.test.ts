@@ -249,6 +249,17 @@ describe('a table', () => {
     expect(faults.filter((f) => f[2] === 'column_doubtful').map((f) => f[1])).toEqual(['position', 'serial']);
     expect(faults).toHaveLength(2);
   });
+  it('remarks on a serial that is shorter than nearly all others, and lets it be', () => {
+    const rows = Array.from({ length: 40 }, (_, i) => [
+      'A1',
+      `${i + 1}`,
+      i === 7 ? 'UN-10' : `UN-${1000 + i}`,
+    ]);
+    const { faults } = readImport(table(BASIC, ...rows), NO_CHOICES, NAMES);
+    expect(faults.map((f) => [f.row, f.code, f.weight])).toEqual([[9, 'serial_unlike', 'note']]);
+    expect(hasFaults(faults)).toBe(false);
+    expect(codes(table(BASIC, ...rows.slice(0, 10)))).toEqual([]);
+  });
   it('finds what a string is on in the as-built and not in the file', () => {
     expect(codes(table([...BASIC, 'plane', 'input'], ['A1', '1', 'UN-0001', 'East roof', '2']))).toEqual([
       [2, 'plane', 'string_differs'],

@@ -61,6 +61,30 @@ function checkSerials(rows: readonly RawRow[], faults: Faults): void {
   }
 }
 
+/** Fewer serials than this have no length that is theirs. */
+const ALIKE_FROM = 20;
+/** So many of them must agree before one that differs is worth a word (our own measure). */
+const ALIKE_SHARE = 0.95;
+
+/** A serial that is longer or shorter than nearly all others is often one that was cut off or read double. */
+function noteUnlike(rows: readonly RawRow[], faults: Faults): void {
+  const serials = rows.flatMap((r) => (r.serial ? [{ line: r.line, serial: r.serial }] : []));
+  const lengths = new Map<number, number>();
+  for (const { serial } of serials) lengths.set(serial.length, (lengths.get(serial.length) ?? 0) + 1);
+  const [usual, count] = [...lengths].sort((a, b) => b[1] - a[1])[0] ?? [0, 0];
+  if (serials.length < ALIKE_FROM || count < ALIKE_SHARE * serials.length) return;
+  for (const { line, serial } of serials)
+    if (serial.length !== usual)
+      faults.add(
+        line,
+        'serial',
+        'serial_unlike',
+        `${serial} has ${serial.length} characters, nearly all others have ${usual}`,
+        'Compare with the label on the unit. If it is right, nothing needs to be done.',
+        { weight: 'note' },
+      );
+}
+
 /** A string is entered with one type of unit. */
 function checkTypes(group: StringRows, typeOf: string | undefined, faults: Faults): void {
   if (typeOf === undefined) return;
@@ -92,6 +116,7 @@ export function readImport(
   const faults = new Faults();
   const raw = readRows(table, choices, names, faults, onRow);
   checkSerials(raw, faults);
+  noteUnlike(raw, faults);
   const nextFree = freeInputs(names);
   const newStrings: NewString[] = [];
   for (const group of byString(raw, names)) {

@@ -95,6 +95,7 @@ export const FAULT_CODES = [
   'serial_double',
   'serial_elsewhere',
   'serial_type',
+  'serial_unlike',
   'number_ambiguous',
   'number_fault',
   'name_unknown',
