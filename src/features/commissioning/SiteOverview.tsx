@@ -1,6 +1,12 @@
 import { useQuery } from '@tanstack/react-query';
 import type { ReactNode } from 'react';
-import { STATE_WORDS, StepBox, STEP_NAMES, STEP_PAGES } from '../../components/commissioning/Steps';
+import {
+  STATE_MARK,
+  STATE_WORDS,
+  StepBox,
+  STEP_NAMES,
+  STEP_PAGES,
+} from '../../components/commissioning/Steps';
 import { ButtonLink } from '../../components/ui/Button';
 import { Caution } from '../../components/ui/Caution';
 import { LiveHeading } from '../../components/ui/LiveHeading';
@@ -57,7 +63,7 @@ function StepSheet({
       id={`step-${step.key}`}
       title={
         <span className="flex items-center gap-2.5">
-          <StepBox mark={step.state === 'done' ? 'full' : step.state === 'under_way' ? 'half' : 'none'} />
+          <StepBox mark={STATE_MARK[step.state]} />
           <span>
             {STEP_NAMES[step.key]}
             <span className="sr-only">, {STATE_WORDS[step.state]}</span>

@@ -1,5 +1,5 @@
 import { useMemo } from 'react';
-import { STATE_WORDS, StepBox, STEP_NAMES, STEP_PAGES } from '../../components/commissioning/Steps';
+import { STEP_NAMES, StepLink } from '../../components/commissioning/Steps';
 import { ButtonLink } from '../../components/ui/Button';
 import { Notice } from '../../components/ui/Notice';
 import { Sheet } from '../../components/ui/Sheet';
@@ -27,19 +27,7 @@ function StepRow({ site }: { site: SiteSteps }) {
     <ol className="mb-4 grid grid-cols-2 gap-x-4 gap-y-1 sm:grid-cols-3 lg:grid-cols-6">
       {site.steps.map((step) => (
         <li key={step.key}>
-          <a
-            href={STEP_PAGES[step.key](site.id)}
-            className="group flex min-h-[44px] items-start gap-2.5 py-1"
-          >
-            <StepBox mark={step.state === 'done' ? 'full' : step.state === 'under_way' ? 'half' : 'none'} />
-            <span className="min-w-0">
-              <span className="block font-medium group-hover:underline">
-                {STEP_NAMES[step.key]}
-                <span className="sr-only">, {STATE_WORDS[step.state]}</span>
-              </span>
-              <span className="block text-sm text-ink-2">{step.words}</span>
-            </span>
-          </a>
+          <StepLink site={site.id} step={step} className="py-1" />
         </li>
       ))}
     </ol>
