@@ -283,6 +283,23 @@ describe('what is refused', () => {
     expect(lost?.reason).toMatchObject({ kind: 'conflict' });
   });
 
+  it('two who enter one serial at two sites at the same moment: one has it, the other is told', async () => {
+    const [string] = other.plan.strings;
+    const empty = { slot: { string: ref(string!.name, other), position: 1 }, serial: 'BOTH-0001' };
+    const both = await Promise.allSettled([
+      place([change(names()[1]!, 10, 'BOTH-0001')]),
+      place([empty], {}, actor, other.id),
+    ]);
+    expect(both.map((r) => r.status).sort()).toEqual(['fulfilled', 'rejected']);
+    expect(['conflict', 'invalid']).toContain(
+      (both.find((r) => r.status === 'rejected')?.reason as AppError).kind,
+    );
+    const { rows } = await db.owner.query(
+      `select 1 from placement p join unit u on u.id = p.unit_id where u.serial = 'BOTH-0001' and p.placed_to is null`,
+    );
+    expect(rows).toHaveLength(1);
+  });
+
   it('a time that has not come, and one before what stands', async () => {
     const [, b] = names();
     const soon = await refusal(place([change(b!, 7, 'EARLY-001')], { at: new Date(Date.now() + 3_600_000) }));

@@ -89,6 +89,11 @@ const HANGING: Record<
       count('install check', 'select 1 from install_check where string_id = ?'),
       count('sign-off', 'select 1 from string_sign_off where string_id = ?'),
       count('file', 'select 1 from attachment where string_id = ?'),
+      count(
+        'shutdown test',
+        `select 1 from string s join shutdown_test t on t.site_id = s.site_id
+         where s.id = ? and t.detail::text like '%' || s.ref::text || '%'`,
+      ),
       count('trace of a command', 'select 1 from trace where string_id = ?'),
       count('event', 'select 1 from event where string_id = ?'),
       count('reported reading', 'select 1 from string_frame where string_id = ? limit 1'),

@@ -174,7 +174,8 @@ export async function openPlacements(
   const serials = opens.map((o) => o.serial);
   await tx.raw(
     `insert into unit (organisation_id, unit_type_id, serial)
-     select ?, type, serial from unnest(?::int4[], ?::text[]) x(type, serial)
+     -- in order: two who enter the same serials at two sites never wait for each other
+     select ?, type, serial from unnest(?::int4[], ?::text[]) x(type, serial) order by serial
      on conflict (organisation_id, serial) do nothing`,
     [organisationId, opens.map((o) => o.unitTypeId), serials],
   );

@@ -19,6 +19,14 @@ const CONSTRAINTS: Record<string, { key: string; message: string }> = {
       'A logger with this serial is on record already. Look at the label; if it is right, ask whoever runs this installation.',
   },
   sensor_logger_id_number_key: { key: 'number', message: 'This logger has a sensor with this number.' },
+  placement_one_place_at_a_time: {
+    key: 'changes',
+    message: 'One of these serials was placed elsewhere at this moment. Nothing was changed; look again.',
+  },
+  placement_one_unit_at_a_time: {
+    key: 'changes',
+    message: 'One of these slots was filled at this moment. Nothing was changed; look again.',
+  },
   string_monitored_has_logger: { key: 'logger', message: 'Units that report need a logger. Choose one.' },
   string_shutdown_only_names_transmitters: {
     key: 'transmitters',
@@ -40,7 +48,7 @@ export async function inWords<T>(prefix: string, work: () => Promise<T>): Promis
     const { code, constraint, table } = DETAIL(error);
     const known = constraint === undefined ? undefined : CONSTRAINTS[constraint];
     if (known)
-      throw new AppError(code === '23505' ? 'conflict' : 'invalid', {
+      throw new AppError(code === '23505' || code === '23P01' ? 'conflict' : 'invalid', {
         message: known.message,
         fields: [{ field: `${prefix}${known.key}`, message: known.message }],
       });

@@ -9,6 +9,7 @@ import {
 } from '../../domain/commissioning/as-built/plan-placements';
 import type { Tx } from '../db/transaction';
 import { AppError, found } from '../errors';
+import { inWords } from './as-built-words';
 import { asBuiltSite } from '../queries/as-built-site';
 import { tellAsBuiltChanged, tellSiteChanged } from '../queries/live-notices';
 import { addAuditEntries, type AuditEntry } from '../queries/people';
@@ -143,7 +144,9 @@ export async function placeUnits(
   const at = new Date(plan.atMs);
   await closePlacements(tx, plan.closes, at);
   await retypeUnits(tx, plan.retyped);
-  await openPlacements(tx, { siteId, organisationId: site.organisationId, at }, plan.opens);
+  await inWords('', () =>
+    openPlacements(tx, { siteId, organisationId: site.organisationId, at }, plan.opens),
+  );
   await claimHeard(
     tx,
     { siteId, organisationId: site.organisationId },
