@@ -22,6 +22,7 @@ export const FEATURES = [
   'customer',
   'readings',
   'methods',
+  'shutdown-test',
   'walk',
   'membership',
   'handover',
@@ -91,6 +92,7 @@ export const TABLE: readonly Row[] = [
     packages: 'browser',
     subfolders: [
       'ui',
+      'commissioning',
       'charts',
       'shell',
       'states',

@@ -2,8 +2,9 @@ import { PAPER } from '../../../drawings/paint';
 import { longDate } from '../../../drawings/times';
 import { Paper } from '../pdf/paper';
 import type { PackData, PackTest } from './data';
+import { equipment, operation } from './equipment';
 import { installChecks, openPoints, testResults } from './results';
-import { equipment, layout, operation, people, singleLine, systemData } from './sections';
+import { layout, people, singleLine, systemData } from './sections';
 
 export interface PackAbout {
   version: number;
