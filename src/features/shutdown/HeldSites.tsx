@@ -25,12 +25,20 @@ export function HeldSites({ caption, held, now }: { caption: string; held: reado
       key: 'site',
       label: 'Site',
       cell: ({ site }) => (
-        <a
-          href={paths.site(site.id)}
-          className="target inline-flex items-center font-semibold hover:underline"
-        >
-          {site.name}
-        </a>
+        <>
+          <a
+            href={paths.site(site.id)}
+            className="target inline-flex items-center font-semibold hover:underline"
+          >
+            {site.name}
+          </a>
+          <a
+            href={paths.shutdownTests(site.id)}
+            className="target flex items-center text-sm text-petrol hover:underline"
+          >
+            Shutdown tests<span className="sr-only"> of {site.name}</span>
+          </a>
+        </>
       ),
     },
     {

@@ -118,14 +118,16 @@ export function NowSheet({ page, now, zone }: { page: SitePage; now: string; zon
           <div className={row}>
             <dt className="text-ink-2">Last shutdown test</dt>
             <dd className="text-right">
-              {page.lastShutdownTest ? (
-                <>
-                  {TEST[page.lastShutdownTest.result]},{' '}
-                  <SiteTime at={page.lastShutdownTest.at} now={now} timeZone={site.timeZone} />
-                </>
-              ) : (
-                'none recorded'
-              )}
+              <a href={paths.shutdownTests(site.id)} className="text-petrol hover:underline">
+                {page.lastShutdownTest ? (
+                  <>
+                    {TEST[page.lastShutdownTest.result]},{' '}
+                    <SiteTime at={page.lastShutdownTest.at} now={now} timeZone={site.timeZone} />
+                  </>
+                ) : (
+                  'none recorded'
+                )}
+              </a>
             </dd>
           </div>
           <div className={row}>
