@@ -1,7 +1,9 @@
 import type { Interpretation } from '../../domain/readings/interpret';
 import type { ReadingQuestion } from '../../domain/readings/reading';
+import { Comb } from '../../drawings/Comb';
 import { Sheet } from '../ui/Sheet';
 import { Tag, type Tone } from '../ui/Tag';
+import { likelyComb } from './likely-comb';
 import { PAINT } from './paint';
 import type { Faults } from './form';
 import { chance, helpWords, hueOf, initiatorWords, outcomeWords, reasoning, shownHypotheses } from './words';
@@ -35,8 +37,8 @@ export function AnswerSheet({ answer, question, waiting, faults }: Props) {
         )}
       </Sheet>
     );
-  const shown = shownHypotheses(answer);
-  const best = shown[0];
+  const shown = shownHypotheses(answer).map((h) => ({ h, comb: likelyComb(h, question) }));
+  const best = shown[0]?.h;
   return (
     <Sheet id="answer">
       <h2 className="mb-3 flex flex-wrap items-center gap-2">
@@ -47,7 +49,7 @@ export function AnswerSheet({ answer, question, waiting, faults }: Props) {
         {`${outcomeWords(answer)}. ${best ? `${best.words}, ${chance(best.probability)}` : ''}`}
       </p>
       <ol className="space-y-3">
-        {shown.map((h) => (
+        {shown.map(({ h, comb }) => (
           <li key={`${h.kind} ${h.count}`}>
             <div className="flex items-start justify-between gap-3">
               <span className="text-[15px] font-semibold leading-5 tracking-[-0.01em]">{h.words}</span>
@@ -59,13 +61,23 @@ export function AnswerSheet({ answer, question, waiting, faults }: Props) {
                 style={{ width: `${(100 * h.probability).toFixed(2)}%` }}
               />
             </div>
+            {comb && (
+              <div aria-hidden="true" className="mt-1.5">
+                <Comb id={`likely-${h.kind}-${h.count}`} slots={comb} width={320} height={16} />
+              </div>
+            )}
             {h.asExpected && h !== best && (
               <p className="mt-0.5 text-sm text-ink-2">This is what was expected.</p>
             )}
           </li>
         ))}
       </ol>
-      <p className="mt-4 text-[15px] leading-[21px] text-ink-2">{reasoning(answer, question).join(' ')}</p>
+      {shown.some(({ comb }) => comb) && (
+        <p className="mt-2 text-sm text-ink-2">
+          The bars stand for the units: how many, not which. A meter tells no positions.
+        </p>
+      )}
+      <p className="mt-3 text-[15px] leading-[21px] text-ink-2">{reasoning(answer, question).join(' ')}</p>
       {answer.earth && (
         <div className="mt-4 border-t border-rule-faint pt-3">
           <h3 className="font-semibold">Readings to earth</h3>
