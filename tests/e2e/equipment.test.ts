@@ -239,7 +239,7 @@ describe('design checks', () => {
     };
     await choose('One half', /^Halyard 4 /);
     await choose('The other half', /^Oxbow 30 /);
-    await dialog.getByLabel('Document').fill('Joint statement of both makers');
+    await dialog.getByLabel('Document', { exact: true }).fill('Joint statement of both makers');
     await dialog.getByLabel('Edition or date').fill('edition 2');
     await dialog.getByLabel('Page or table').fill('page 4');
     const evidence = (name: string, body: string) =>

@@ -1,6 +1,9 @@
 import { describe, expect, it } from 'vitest';
 import { expectedPower } from '../../src/domain/photovoltaics/expected-power';
+import { moduleSheetOf } from '../../src/domain/equipment/module-fields';
+import { starterEquipment } from '../../src/domain/equipment/starter';
 import { stringSizing } from '../../src/domain/photovoltaics/limits/string-sizing';
+import { stringVoltageCold } from '../../src/domain/photovoltaics/limits/string-voltage';
 import { pvwattsDc } from '../../src/domain/photovoltaics/module/pvwatts';
 import { stringCurveOf } from '../../src/domain/photovoltaics/string/curve';
 import type { StringElement } from '../../src/domain/photovoltaics/string/elements';
@@ -83,6 +86,8 @@ interface SizingOut {
   n_max_table: number | null;
 }
 
+const MODULE = moduleSheetOf(starterEquipment().modules[0] ?? {});
+
 // string_sizing.json: NEC 690.7(A)(1) and Table 690.7(A), arithmetic of the table; printed: 1e-9 relative
 describe('string sizing', () => {
   it.each(casesOf<SizingIn, SizingOut>('string_sizing'))('$id', ({ in: i, out }) => {
@@ -103,6 +108,17 @@ describe('string sizing', () => {
     expect(sizing.fewest).toBe(out.n_min);
     expect(sizing.tableFactor).toBe(out.table_690_7_a_factor);
     expect(sizing.mostByTable).toBe(out.n_max_table);
+    // the design check of a string adds the same figures up
+    const type = { ...MODULE, vocRef: i.v_oc_stc, betaVoc: i.beta_voc_pct_per_c / 100 };
+    const cold = stringVoltageCold([{ type, count: out.n_max_coefficient }], i.temp_min_c);
+    expectRelative('string voltage', cold.byCoefficient, out.string_v_oc_cold_at_n_max, 1e-9);
+    if (out.table_690_7_a_factor !== null)
+      expectRelative(
+        'by the table',
+        cold.byTable,
+        out.n_max_coefficient * i.v_oc_stc * out.table_690_7_a_factor,
+        1e-9,
+      );
   });
 });
 

@@ -118,7 +118,7 @@ export function PairForm({ connectors, onDone }: Props) {
           type="file"
           accept="application/pdf,image/jpeg,image/png,image/webp"
           aria-describedby="evidence-hint"
-          className="target w-full text-[15px]"
+          className="w-full text-[15px] file:mr-3 file:min-h-[44px] file:rounded file:border file:border-solid file:border-rule file:bg-sheet file:px-4 file:text-[15px] file:text-ink"
           onChange={(event) => {
             setFile(event.target.files?.[0] ?? null);
             setRecorded((old) => old && { ...old, ref: crypto.randomUUID() });

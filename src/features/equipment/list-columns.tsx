@@ -27,6 +27,8 @@ const figure = (
   ...(from ? { from } : {}),
   cell: (row) => write(n(row, key)),
 });
+const current = (value: number | null): string =>
+  quantity(value, 'A', value !== null && !Number.isInteger(value) ? 1 : 0);
 const volts = (value: number | null): string => quantity(value, 'V', value !== null && value < 100 ? 1 : 0);
 const kiloWatts = (value: number | null): string => power(value);
 const watts = (row: Row): number => (n(row, 'vmpRef') ?? 0) * (n(row, 'impRef') ?? 0);
@@ -75,14 +77,14 @@ const MIDDLE: Record<Catalogue['family'], (names: Map<string, string>) => Column
     },
     figure('shutdownVoltageNominal', 'In shutdown', (v) => quantity(v, 'V', 2), 'sm'),
     figure('voltageInMax', 'Input up to', volts, 'md'),
-    figure('currentMax', 'Current up to', (v) => quantity(v, 'A', 1), 'md'),
+    figure('currentMax', 'Current up to', current, 'md'),
     figure('insulationTestMax', 'Insulation test', (v) => (v === null ? 'none allowed' : volts(v)), 'lg'),
   ],
   connectors: () => [
     { key: 'maker', label: 'Maker', sortable: true, from: 'sm', cell: (row) => text(row, 'maker') },
     { key: 'family', label: 'Type', sortable: true, from: 'sm', cell: (row) => text(row, 'family') },
     figure('voltageMax', 'Up to', volts, 'md'),
-    figure('currentMax', 'Current up to', (v) => quantity(v, 'A', 0), 'md'),
+    figure('currentMax', 'Current up to', current, 'md'),
   ],
   inverters: () => [
     figure('acPowerMax', 'AC power', kiloWatts, 'sm'),
@@ -96,7 +98,7 @@ const MIDDLE: Record<Catalogue['family'], (names: Map<string, string>) => Column
       from: 'md',
       cell: (row) => `${number(n(row, 'mpptMin'))} to ${volts(n(row, 'mpptMax'))}`,
     },
-    figure('iscMax', 'isc of one input', (v) => quantity(v, 'A', 0), 'lg'),
+    figure('iscMax', 'isc of one input', current, 'lg'),
   ],
 };
 
