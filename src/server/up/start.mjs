@@ -127,7 +127,8 @@ function launchSimulator(env, { scheme, reach, simulatorPort, stage }, atEnd) {
           DATABASE_URL_APP: '',
           DATABASE_URL_INGEST: '',
           WAKELINE_INGEST_URL: `${scheme === 'https' ? 'wss' : 'ws'}://${reach}/ingest/v1`,
-          NODE_EXTRA_CA_CERTS: process.env.TLS_CERT || process.env.NODE_EXTRA_CA_CERTS, // it may be signed by itself
+          NODE_EXTRA_CA_CERTS:
+            (scheme === 'https' && process.env.TLS_CERT) || process.env.NODE_EXTRA_CA_CERTS, // it may be signed by itself
           WAKELINE_DEMO_SECRET: stage.state.demoSecret,
           WAKELINE_DEMO_SINCE: stage.state.demoSince ? String(stage.state.demoSince) : undefined,
           WAKELINE_SIM_STATE: path.join(stage.home, 'simulator.json'),
@@ -208,7 +209,7 @@ function welcome(address, simulatorPort, ready) {
   process.stdout.write(lines.join('\n') + '\n');
 }
 
-async function bringUpDemo(args, atEnd, { prepare = () => Promise.resolve(), launchSite }) {
+async function bringUpDemo(args, atEnd, { prepare = () => Promise.resolve(), secure = false, launchSite }) {
   const unknown = args.filter((arg) => arg !== '--fresh');
   if (unknown.length > 0)
     throw new Stop(
@@ -219,7 +220,7 @@ async function bringUpDemo(args, atEnd, { prepare = () => Promise.resolve(), lau
   const port = portFrom('PORT', 4321);
   const simulatorPort = portFrom('SIMULATOR_PORT', 4322);
   const reach = `${host === '0.0.0.0' || host === '::' ? '127.0.0.1' : host}:${port}`;
-  const scheme = process.env.TLS_CERT ? 'https' : 'http';
+  const scheme = secure ? 'https' : 'http';
   const address = `${scheme}://${reach}/`;
   claimHome(homeOf('demo'), address, atEnd);
   await needPort('PORT', port, host);
@@ -251,6 +252,7 @@ async function bringUpDemo(args, atEnd, { prepare = () => Promise.resolve(), lau
 export function start(args, { atEnd }) {
   return bringUpDemo(args, atEnd, {
     prepare: buildIfStale,
+    secure: Boolean(process.env.TLS_CERT),
     launchSite: (env) => {
       const site = launch(process.execPath, ['--max-semi-space-size=64', 'src/server/serve.mjs'], {
         cwd: root,
@@ -265,6 +267,8 @@ export function start(args, { atEnd }) {
 
 /** The demo from the sources, reloaded as they change. */
 export function develop(args, { atEnd }) {
+  // the development server speaks plain HTTP, and a cookie for HTTPS only would never come back to it
+  for (const name of ['TLS_CERT', 'TLS_KEY', 'COOKIE_SECURE']) delete process.env[name];
   return bringUpDemo(args, atEnd, {
     launchSite: (env) => {
       const where = ['--host', env.HOST, '--port', env.PORT];
