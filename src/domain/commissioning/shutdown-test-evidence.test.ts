@@ -94,6 +94,20 @@ describe('the conduct of a unit', () => {
     expect(seen.units[0]!.followed).toEqual([3, 4]);
     expect(seen.traces[0]).not.toHaveProperty('unitV');
   });
+  it('is not changed by what a trace goes on to say after the end of the round', () => {
+    const trace = (seconds: number) => ({
+      measuringPoint: 'unit_sum' as const,
+      accuracyV: 1,
+      startedS: C,
+      voltage: new Array<number>(seconds).fill(38),
+      unitV: new Array<(number | null)[]>(seconds).fill([38, null]),
+    });
+    const at = (seconds: number) =>
+      run([], { untilS: C + 50 }, { traces: [trace(seconds), { ...trace(9), startedS: C + 60 }] });
+    expect(at(120)).toEqual(at(51));
+    expect(at(120).traces).toHaveLength(1);
+    expect(at(120).units[0]!.passedAtS).toBe(50);
+  });
   it('says nothing before a command', () => {
     expect(run([frame(-42, PASSING, 38)], { commandS: null }).units[0]).toMatchObject({
       followed: null,

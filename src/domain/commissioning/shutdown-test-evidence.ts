@@ -45,9 +45,17 @@ interface Seen {
  * shutdown later, with nothing to the contrary before the release; the times lie between the two reports. A voltage
  * on its conductors counts before its claim.
  */
-export function conductOf(reports: StringReports, times: ConductTimes): StringConduct {
+export function conductOf(given: StringReports, times: ConductTimes): StringConduct {
+  // a trace grows for minutes: what lies past the end of the round is no part of it
+  const traces = given.traces.flatMap((t): ReportedTrace[] => {
+    const seconds = Math.floor(times.untilS - t.startedS) + 1;
+    return seconds < 1
+      ? []
+      : [{ ...t, voltage: t.voltage.slice(0, seconds), unitV: t.unitV?.slice(0, seconds) ?? null }];
+  });
+  const reports = { ...given, traces, frames: given.frames.filter((f) => f.atS <= times.untilS) };
   const { part } = reports;
-  const seen = observations(reports, times);
+  const seen = observations(reports);
   const inputs = reports.inputs.filter((i) => i.atS <= times.untilS);
   const { commandS, releaseS } = times;
   const before =
@@ -74,7 +82,7 @@ export function conductOf(reports: StringReports, times: ConductTimes): StringCo
     reports: reports.frames.length + reports.traces.reduce((n, t) => n + t.voltage.length, 0),
     input: newest(during, commandS),
     inputBeforeV: before.length === 0 ? null : Math.max(...before.map((i) => i.voltageV)),
-    sums: commandS === null ? [] : sumsOf(reports, commandS, times.untilS),
+    sums: commandS === null ? [] : sumsOf(reports, commandS),
     inputs:
       commandS === null
         ? []
@@ -89,26 +97,21 @@ export function conductOf(reports: StringReports, times: ConductTimes): StringCo
 const DRAWN_BEFORE_S = 60;
 
 /** The string's voltage by its units, where every one reported what is on its conductors. */
-function sumsOf(
-  { part, frames, limits }: StringReports,
-  commandS: number,
-  untilS: number,
-): [number, number][] {
+function sumsOf({ part, frames, limits }: StringReports, commandS: number): [number, number][] {
   if (!limits.measuresOutput) return [];
   return frames.flatMap((f): [number, number][] => {
-    if (f.atS < commandS - DRAWN_BEFORE_S || f.atS > untilS) return [];
+    if (f.atS < commandS - DRAWN_BEFORE_S) return [];
     const values = part.serials.flatMap((serial, i) => (serial === null ? [] : [f.voltageOut?.[i] ?? null]));
     if (values.length === 0 || values.some((v) => v === null)) return [];
     return [[f.atS - commandS, Math.round(values.reduce<number>((a, v) => a + (v ?? 0), 0)) / 100]];
   });
 }
 
-function observations(reports: StringReports, times: ConductTimes): Seen[][] {
+function observations(reports: StringReports): Seen[][] {
   const n = reports.part.serials.length;
   const seen: Seen[][] = Array.from({ length: n }, () => []);
   const unsettled = new Array<number>(n).fill(-1);
   for (const frame of reports.frames) {
-    if (frame.atS > times.untilS) continue;
     const { shown } = scanFrame(reports.limits, frame, unsettled, new Array<number>(n).fill(0));
     for (let i = 0; i < n; i++) {
       const code = shown[i] ?? -1;
@@ -124,7 +127,6 @@ function observations(reports: StringReports, times: ConductTimes): Seen[][] {
   for (const trace of reports.traces)
     trace.unitV?.forEach((row, second) => {
       const atS = trace.startedS + second;
-      if (atS > times.untilS) return;
       row.forEach((v, i) => {
         if (v === null || i >= n) return;
         const passing = v * 100 >= passingFromCv;
