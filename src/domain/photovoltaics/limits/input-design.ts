@@ -29,7 +29,10 @@ export function sharingFindings(parallel: readonly BuiltString[]): DesignFinding
       limit: inverter.stringsPerInput,
       unit: '',
       safety: true,
-      words: `${first.input.name} has ${parallel.length} strings (${names(parallel)}); its type takes ${inverter.stringsPerInput}.`,
+      // what holds everywhere names no input, so that it is said once
+      words: fits
+        ? `${parallel.length} strings share an input; its type takes ${inverter.stringsPerInput}.`
+        : `${first.input.name} has ${parallel.length} strings (${names(parallel)}); its type takes ${inverter.stringsPerInput}.`,
       clause: 'Inverter’s instructions',
       remedy: fits
         ? null
@@ -80,7 +83,7 @@ function voltageSpread(parallel: readonly BuiltString[]): DesignFinding {
     unit: '',
     safety: false,
     words: fits
-      ? `The strings of ${parallel[0]?.input.name ?? 'the input'} have voltages at maximum power within ${figure(100 * VOLTAGE_SPREAD, '%')} (modules: ${counts}).`
+      ? `Strings of one input have voltages at maximum power within ${figure(100 * VOLTAGE_SPREAD, '%')} of each other.`
       : `The strings of ${parallel[0]?.input.name ?? 'the input'} share one voltage but would work at ${figure(Math.round(low), 'V')} to ${figure(Math.round(high), 'V')} (modules: ${counts}). The short one pulls the others down; it costs energy, and in poor light current can flow back.`,
     clause: 'Strings in parallel share one voltage; own rule: 2 %',
     remedy: fits ? null : 'Give strings of different length inputs of their own.',
