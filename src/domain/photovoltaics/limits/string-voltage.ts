@@ -99,7 +99,6 @@ export function voltageFindings(design: StringDesign): DesignFinding[] {
       within: `${day} ${n} modules give ${figure(Math.round(byCoefficient), 'V')}; ${most} would fit ${whose}. ${table}`,
       exceeded: `${day} ${n} modules give ${figure(Math.round(byCoefficient), 'V')}; at most ${most} fit ${whose}. ${table}`,
       alternatives: [
-        'Shorten the strings.',
         'For systems of 100 kW or more NEC 690.7(A)(3) lets a licensed professional electrical engineer document another method.',
       ],
       certain,
