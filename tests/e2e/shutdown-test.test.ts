@@ -95,11 +95,14 @@ async function accept(): Promise<void> {
 }
 async function sign(): Promise<void> {
   await expect.poll(() => button('Sign this test').count(), SHORT).toBe(1);
-  await page.getByLabel('Your password again').fill(PASSWORD);
   // figures may still come in: what is signed is what is shown
   await expect
     .poll(async () => {
       if (await page.getByRole('heading', { name: 'Signature' }).count()) return true;
+      await page
+        .getByLabel('Your password again')
+        .fill(PASSWORD, { timeout: 2000 })
+        .catch(() => undefined);
       await button('Sign this test')
         .click({ timeout: 2000 })
         .catch(() => undefined);
@@ -205,9 +208,14 @@ describe('a shutdown test on a phone', { timeout: 240_000 }, () => {
   });
 
   it('is signed with the password entered again, and with no other', async () => {
-    await page.getByLabel('Your password again').fill('not this one');
-    await button('Sign this test').click();
-    await page.getByText('This is not your password.').waitFor();
+    // the last seconds may still trickle in: then it asks to look again first
+    await expect
+      .poll(async () => {
+        await page.getByLabel('Your password again').fill('not this one');
+        await button('Sign this test').click();
+        return page.getByText('This is not your password.', { exact: true }).count();
+      }, LONG)
+      .toBe(1);
     await sign();
     const text = plain(await page.locator('#signature').innerText());
     expect(text).toContain('They are the same.');

@@ -96,8 +96,6 @@ export function SignStep({ test, person, mayWrite, onAnotherRound }: Props) {
         <Sheet id="sign" title="Sign">
           {open !== undefined ? (
             <p>Round {open + 1} is still under way: end it first.</p>
-          ) : test.waiting > 0 ? (
-            <p>{test.waiting} entries wait on this phone: they must arrive before anything is signed.</p>
           ) : (
             <SignForm
               test={test}
@@ -169,6 +167,11 @@ function SignForm({
         error={fault}
         onChange={(e) => setPassword(e.target.value)}
       />
+      {test.waiting > 0 && (
+        <p className="mt-2 text-rust-ink">
+          {test.waiting} entries wait on this phone: they must arrive before anything is signed.
+        </p>
+      )}
       {unproved && (
         <p className="mt-2 text-rust-ink">Say first whether the instrument was proved after the test.</p>
       )}
@@ -176,7 +179,7 @@ function SignForm({
         type="submit"
         weight="primary"
         className="mt-3 w-full sm:w-auto"
-        disabled={sign.isPending || password === '' || unproved}
+        disabled={sign.isPending || password === '' || unproved || test.waiting > 0}
       >
         {sign.isPending ? 'Signing …' : 'Sign this test'}
       </Button>

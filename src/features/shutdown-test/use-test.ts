@@ -5,6 +5,7 @@ import {
   type Act,
   type KeptAct,
   type TestRecord,
+  type TestRound,
 } from '../../domain/commissioning/shutdown-test-record';
 import { ApiError, api } from '../../lib/api';
 import { newRef } from '../../lib/capture-records';
@@ -18,6 +19,12 @@ import { KeptActs, type Refused } from './kept';
 const WATCHING_MS = 1500;
 const RESTING_MS = 20_000;
 const AGAIN_MS = 3000;
+
+/** Loggers send the last seconds of a round so long after its end, ms. */
+const TRICKLES_MS = 60_000;
+
+const underWay = (r: TestRound, nowMs: number): boolean =>
+  r.watchStarted !== null && (r.ended === null || nowMs - Date.parse(r.ended.at) < TRICKLES_MS);
 
 export interface TestInHand {
   page: ShutdownTestPage;
@@ -49,6 +56,7 @@ export function useTest(initial: ShutdownTestPage, person: string): TestInHand {
   const sending = useRef(false);
   const skew = useRef(0);
 
+  const now = useCallback(() => Date.now() + skew.current, []);
   const heard = useCallback((page: ShutdownTestPage) => {
     skew.current = Date.parse(page.at) - Date.now();
     return page;
@@ -60,7 +68,7 @@ export function useTest(initial: ShutdownTestPage, person: string): TestInHand {
         heard(await api<ShutdownTestPage>(paths.api.shutdownTest(ref), { signal })),
       initialData: initial,
       refetchInterval: ({ state }) =>
-        state.data?.state === 'draft' && state.data.record.rounds.some((r) => r.watchStarted && !r.ended)
+        state.data?.state === 'draft' && state.data.record.rounds.some((r) => underWay(r, now()))
           ? WATCHING_MS
           : RESTING_MS,
     },
@@ -110,7 +118,6 @@ export function useTest(initial: ShutdownTestPage, person: string): TestInHand {
     return () => clearTimeout(timer);
   }, [queue, tries, ref, key, client, heard, reload, kept]);
 
-  const now = useCallback(() => Date.now() + skew.current, []);
   const act = useCallback(
     (...acts: Act[]) => {
       const at = new Date(now()).toISOString();
