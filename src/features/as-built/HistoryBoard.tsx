@@ -1,9 +1,11 @@
 import { keepPreviousData, useInfiniteQuery } from '@tanstack/react-query';
 import { useDeferredValue } from 'react';
 import { Button, ButtonLink } from '../../components/ui/Button';
+import { Choice } from '../../components/ui/Choice';
+import { Field } from '../../components/ui/Field';
 import { Heading } from '../../components/ui/Heading';
+import { NotRead } from '../../components/ui/NotRead';
 import { Notice } from '../../components/ui/Notice';
-import { SelectField } from '../../components/ui/SelectField';
 import { Sheet } from '../../components/ui/Sheet';
 import { SiteTime } from '../../components/ui/Time';
 import { counted } from '../../drawings/numbers';
@@ -57,7 +59,7 @@ export function HistoryBoard({ initial, view: initialView }: Props) {
   const [newest] = items;
   const filtered = JSON.stringify(asked) !== JSON.stringify(HISTORY_DEFAULTS);
   const finding = newest
-    ? `${historyTitle(newest)} by ${newest.person}`
+    ? historyTitle(newest)
     : filtered
       ? 'No change fits'
       : 'Nothing has been changed here yet';
@@ -74,9 +76,10 @@ export function HistoryBoard({ initial, view: initialView }: Props) {
         sentence={
           newest ? (
             <>
-              {filtered ? 'The newest that fits, ' : 'The newest change, '}
+              {filtered ? 'The newest change that fits, by ' : 'The newest change, by '}
+              {newest.person} at{' '}
               <SiteTime at={newest.at} now={initial.at} timeZone={site.timeZone} zone />
-              {newest.reason && <>: {newest.reason}</>}
+              {newest.reason ? <>: “{newest.reason}”</> : '.'}
             </>
           ) : (
             'Every change of the as-built is kept with who made it, when and why.'
@@ -84,58 +87,52 @@ export function HistoryBoard({ initial, view: initialView }: Props) {
         }
       />
       <div className="no-print mb-5 grid items-end gap-3 sm:grid-cols-2 lg:grid-cols-[1fr_180px_180px_180px_auto]">
-        <div>
-          <label htmlFor="find" className="mb-1 block font-medium">
-            Serial, name or reason
-          </label>
-          <input
-            id="find"
-            type="search"
-            autoComplete="off"
-            value={view.find}
-            onChange={(e) => change({ find: e.target.value }, 'typed')}
-            className="min-h-[44px] w-full rounded border border-rule bg-sheet px-3 text-[16px]"
-          />
-        </div>
-        <SelectField
+        <Field
+          label="Serial, name or reason"
+          type="search"
+          autoComplete="off"
+          value={view.find}
+          onChange={(e) => change({ find: e.target.value }, 'typed')}
+        />
+        <Choice
           label="What"
           value={view.kind}
           options={KINDS}
-          onChange={(e) => change({ kind: KINDS.find((k) => k.value === e.target.value)?.value ?? 'all' })}
+          onChange={(kind) => change({ kind: KINDS.find((k) => k.value === kind)?.value ?? 'all' })}
         />
-        <SelectField
+        <Choice
           label="String"
           value={view.string}
           options={[
             { value: '', label: 'Every string' },
             ...initial.strings.map((s) => ({ value: s.id, label: s.name })),
           ]}
-          onChange={(e) => change({ string: e.target.value })}
+          onChange={(string) => change({ string })}
         />
-        <SelectField
+        <Choice
           label="Person"
           value={view.person}
           options={[
             { value: '', label: 'Everybody' },
             ...initial.people.map((p) => ({ value: p.id, label: p.name })),
           ]}
-          onChange={(e) => change({ person: e.target.value })}
+          onChange={(person) => change({ person })}
         />
-        <ButtonLink href={withQuery(paths.api.asBuiltHistoryCsv(site.id), view)} download>
+        <ButtonLink
+          className="min-h-11"
+          href={withQuery(paths.api.asBuiltHistoryCsv(site.id), view)}
+          download
+        >
           CSV
         </ButtonLink>
       </div>
-      {error && (
-        <div className="mb-5">
-          <Notice
-            kind="failed"
-            title="The history could not be read"
-            action={<Button onClick={() => void refetch()}>Try again</Button>}
-          >
-            {error.message}
-          </Notice>
-        </div>
-      )}
+      <NotRead
+        error={error}
+        title="The history could not be read"
+        kind="failed"
+        onRetry={() => refetch()}
+        className="mb-5"
+      />
       {stays.length > 0 && <Life stays={stays} page={initial} />}
       <Sheet
         id="changes"

@@ -1,6 +1,6 @@
 import { useId } from 'react';
+import { Choice } from '../../components/ui/Choice';
 import { Field } from '../../components/ui/Field';
-import { SelectField } from '../../components/ui/SelectField';
 import type { PartField, PartKind } from '../../domain/commissioning/as-built/parts';
 import { PART_FIELDS } from '../../domain/commissioning/as-built/parts';
 import type { AsBuilt } from '../../schemas/api/as-built';
@@ -70,17 +70,17 @@ function OneField({
       );
     case 'choice':
       return (
-        <SelectField
+        <Choice
           {...common}
           name={field.key}
           options={field.options}
           value={text}
-          onChange={(e) => onChange(field.key, e.target.value)}
+          onChange={(chosen) => onChange(field.key, chosen)}
         />
       );
     case 'time_zone':
       return (
-        <SelectField
+        <Choice
           {...common}
           name={field.key}
           options={(timeZones.includes(text) ? timeZones : [text, ...timeZones]).map((z) => ({
@@ -88,7 +88,7 @@ function OneField({
             label: z.replaceAll('_', ' '),
           }))}
           value={text}
-          onChange={(e) => onChange(field.key, e.target.value)}
+          onChange={(chosen) => onChange(field.key, chosen)}
         />
       );
     case 'part': {
@@ -97,7 +97,7 @@ function OneField({
       const several = field.key === 'moduleType';
       const none = field.optional && !(several && adding) ? (field.none ?? 'None') : 'Choose …';
       return (
-        <SelectField
+        <Choice
           {...common}
           name={field.key}
           options={[
@@ -105,7 +105,7 @@ function OneField({
             ...options.map((o) => ({ value: o.id, label: o.name })),
           ]}
           value={text}
-          onChange={(e) => onChange(field.key, e.target.value)}
+          onChange={(chosen) => onChange(field.key, chosen)}
         />
       );
     }

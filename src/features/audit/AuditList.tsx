@@ -1,13 +1,13 @@
-import { ButtonLink } from '../../components/ui/Button';
+import { Button, ButtonLink } from '../../components/ui/Button';
+import { Choice } from '../../components/ui/Choice';
 import { Notice } from '../../components/ui/Notice';
+import { SearchInput } from '../../components/ui/SearchInput';
 import { Sheet } from '../../components/ui/Sheet';
 import { SiteTime } from '../../components/ui/Time';
 import { withQuery } from '../../lib/api';
 import { AUDIT_AREAS, type AuditItem, type AuditPage, type AuditView } from '../../schemas/api/audit';
 import { paths } from '../../schemas/paths';
 import { actionWords, AREA_WORDS, changesOf } from './words';
-
-const CONTROL = 'target rounded border border-rule bg-sheet px-2.5 text-[15px] text-ink';
 
 function Entry({ item, at, timeZone }: { item: AuditItem; at: string; timeZone: string }) {
   const changes = changesOf(item);
@@ -59,28 +59,24 @@ export function AuditList({ page, view, timeZone }: { page: AuditPage; view: Aud
   return (
     <>
       <form action={paths.audit()} className="no-print mb-4 flex flex-wrap items-center gap-x-3 gap-y-2">
-        <input
-          type="search"
+        <SearchInput
           name="q"
-          defaultValue={view.q}
-          aria-label="Find a person, site, serial or reason"
+          label="Find a person, site, serial or reason"
           placeholder="Person, site, serial or reason"
-          className={`${CONTROL} w-full placeholder:text-ink-3 sm:w-[280px]`}
+          defaultValue={view.q}
+          className="sm:w-[280px]"
         />
-        <label className="flex items-center gap-2 text-sm text-ink-2">
-          About
-          <select name="area" defaultValue={view.area} className={CONTROL}>
-            <option value="all">everything</option>
-            {AUDIT_AREAS.map((area) => (
-              <option key={area} value={area}>
-                {AREA_WORDS[area]}
-              </option>
-            ))}
-          </select>
-        </label>
-        <button type="submit" className={`${CONTROL} px-4 font-medium`}>
-          Find
-        </button>
+        <Choice
+          inline
+          label="About"
+          name="area"
+          defaultValue={view.area}
+          options={[
+            { value: 'all', label: 'everything' },
+            ...AUDIT_AREAS.map((area) => ({ value: area, label: AREA_WORDS[area] })),
+          ]}
+        />
+        <Button type="submit">Find</Button>
         <ButtonLink href={withQuery(paths.api.auditCsv(), filters)} className="sm:ml-auto">
           CSV
         </ButtonLink>

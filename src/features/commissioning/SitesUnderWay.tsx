@@ -1,7 +1,9 @@
 import { useMemo } from 'react';
 import { STEP_NAMES, StepLink } from '../../components/commissioning/Steps';
 import { ButtonLink } from '../../components/ui/Button';
+import { Choice } from '../../components/ui/Choice';
 import { Notice } from '../../components/ui/Notice';
+import { SearchInput } from '../../components/ui/SearchInput';
 import { Sheet } from '../../components/ui/Sheet';
 import { RelativeTime } from '../../components/ui/Time';
 import { currentStep, openGaps, STEPS } from '../../domain/commissioning/steps';
@@ -18,8 +20,6 @@ interface Props {
   view: UnderWayView;
   mayCreate: boolean;
 }
-
-const CONTROL = 'target rounded border border-rule bg-sheet px-2.5 text-[15px] text-ink';
 
 /** The steps of one site in a row: ticked, half, empty; each a link. */
 function StepRow({ site }: { site: SiteSteps }) {
@@ -141,45 +141,36 @@ export function SitesUnderWay({ sites, at, view: initial, mayCreate }: Props) {
         className="no-print mb-4 flex flex-wrap items-center gap-x-3 gap-y-2"
         onSubmit={(event) => event.preventDefault()}
       >
-        <input
-          type="search"
+        <SearchInput
           name="q"
-          aria-label="Filter by name, place or person"
-          placeholder="Filter by name, place or person"
-          autoComplete="off"
+          label="Filter by name, place or person"
           value={view.q}
-          onChange={(event) => change({ q: event.target.value }, 'typed')}
-          className={`${CONTROL} w-full placeholder:text-ink-3 sm:w-[260px]`}
+          onChange={(typed) => change({ q: typed }, 'typed')}
+          className="sm:w-[260px]"
         />
-        <label className="flex items-center gap-2 text-sm text-ink-2">
-          At step
-          <select
-            name="step"
-            value={view.step}
-            onChange={(event) => change({ step: event.target.value as UnderWayView['step'] })}
-            className={CONTROL}
-          >
-            <option value="all">any</option>
-            {STEPS.map((step) => (
-              <option key={step} value={step}>
-                {STEP_NAMES[step]}
-              </option>
-            ))}
-          </select>
-        </label>
-        <label className="flex items-center gap-2 text-sm text-ink-2">
-          Sorted by
-          <select
-            name="sort"
-            value={view.sort}
-            onChange={(event) => change({ sort: event.target.value as UnderWayView['sort'] })}
-            className={CONTROL}
-          >
-            <option value="name">name</option>
-            <option value="days">days in step</option>
-            <option value="blocks">points that block</option>
-          </select>
-        </label>
+        <Choice
+          inline
+          label="At step"
+          name="step"
+          value={view.step}
+          options={[
+            { value: 'all', label: 'any' },
+            ...STEPS.map((step) => ({ value: step, label: STEP_NAMES[step] })),
+          ]}
+          onChange={(step) => change({ step: step as UnderWayView['step'] })}
+        />
+        <Choice
+          inline
+          label="Sorted by"
+          name="sort"
+          value={view.sort}
+          options={[
+            { value: 'name', label: 'name' },
+            { value: 'days', label: 'days in step' },
+            { value: 'blocks', label: 'points that block' },
+          ]}
+          onChange={(sort) => change({ sort: sort as UnderWayView['sort'] })}
+        />
         <span className="flex flex-wrap gap-2 sm:ml-auto">
           <ButtonLink href={withQuery(paths.api.commissioningCsv(), view)}>CSV</ButtonLink>
           {mayCreate && (

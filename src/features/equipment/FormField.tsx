@@ -1,5 +1,5 @@
+import { Choice } from '../../components/ui/Choice';
 import { Field as TextInput } from '../../components/ui/Field';
-import { SelectField } from '../../components/ui/SelectField';
 import type { Field } from '../../domain/equipment/fields';
 import type { ConnectorItem } from '../../schemas/api/equipment';
 
@@ -52,17 +52,10 @@ export function FormField({ field, value, error, theirs, connectors, disabled, o
         />
       );
     case 'choice':
-      return (
-        <SelectField
-          {...shared}
-          options={field.options}
-          value={value}
-          onChange={(event) => onChange(event.target.value)}
-        />
-      );
+      return <Choice {...shared} options={field.options} value={value} onChange={onChange} />;
     case 'connector':
       return (
-        <SelectField
+        <Choice
           {...shared}
           options={[
             { value: '', label: 'Not entered' },
@@ -71,7 +64,7 @@ export function FormField({ field, value, error, theirs, connectors, disabled, o
               .map((c) => ({ value: c.id, label: c.archived ? `${c.name} (archived)` : c.name })),
           ]}
           value={value}
-          onChange={(event) => onChange(event.target.value)}
+          onChange={onChange}
         />
       );
   }

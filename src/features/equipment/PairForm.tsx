@@ -1,8 +1,8 @@
 import { useState } from 'react';
 import { Button } from '../../components/ui/Button';
+import { Choice } from '../../components/ui/Choice';
 import { Field } from '../../components/ui/Field';
 import { Notice } from '../../components/ui/Notice';
-import { SelectField } from '../../components/ui/SelectField';
 import { ApiError, api, withQuery } from '../../lib/api';
 import { uploadFile } from '../../lib/upload';
 import { pairInput, type ConnectorItem } from '../../schemas/api/equipment';
@@ -87,19 +87,19 @@ export function PairForm({ connectors, onDone }: Props) {
         void send();
       }}
     >
-      <SelectField
+      <Choice
         label="One half"
         options={options}
         value={typed.first}
         error={faults.first ?? null}
-        onChange={(event) => set('first')(event.target.value)}
+        onChange={set('first')}
       />
-      <SelectField
+      <Choice
         label="The other half"
         options={options}
         value={typed.second}
         error={faults.second ?? null}
-        onChange={(event) => set('second')(event.target.value)}
+        onChange={set('second')}
       />
       {text(
         'document',

@@ -1,6 +1,7 @@
 import { useState, type SubmitEvent } from 'react';
 import { useMutation } from '@tanstack/react-query';
 import { Button } from '../../components/ui/Button';
+import { Choice } from '../../components/ui/Choice';
 import { Field } from '../../components/ui/Field';
 import { Notice } from '../../components/ui/Notice';
 import { ApiError, api } from '../../lib/api';
@@ -54,39 +55,29 @@ export function IsolationForm({ siteId, strings, string, onString, onStarted }: 
           {start.error.message}
         </Notice>
       )}
-      <div>
-        <label htmlFor="isolate-string" className="mb-1 block font-medium">
-          String to isolate
-        </label>
-        <select
-          id="isolate-string"
-          className={`min-h-[44px] w-full rounded border bg-sheet px-2.5 text-[16px] text-ink ${faults.string ? 'border-rust' : 'border-rule'}`}
-          value={string}
-          onChange={(e) => onString(e.target.value)}
-          aria-invalid={faults.string ? true : undefined}
-          aria-describedby="isolate-string-more"
-        >
-          <option value="">Choose a string</option>
-          {strings.map((s) => (
-            <option key={s.id} value={s.id}>
-              {s.name}
-              {s.current === null ? '' : `, ${s.current.toFixed(1)} A now`}
-            </option>
-          ))}
-        </select>
-        <p
-          id="isolate-string-more"
-          role={faults.string ? 'alert' : undefined}
-          className={`mt-1 text-sm ${faults.string ? 'font-medium text-rust-ink' : 'text-ink-2'}`}
-        >
-          {faults.string ??
-            (mute
+      <Choice
+        id="isolate-string"
+        label="String to isolate"
+        value={string}
+        options={[
+          { value: '', label: 'Choose a string' },
+          ...strings.map((s) => ({
+            value: s.id,
+            label: s.current === null ? s.name : `${s.name}, ${s.current.toFixed(1)} A now`,
+          })),
+        ]}
+        onChange={onString}
+        error={faults.string}
+        hint={
+          faults.string
+            ? null
+            : mute
               ? 'Its units report nothing: only the input’s current will tell.'
               : chosen && (chosen.current ?? 0) < 0.5
                 ? 'It carries hardly any current now: wait until the inverter runs.'
-                : 'It must carry current now, or nothing can fall.')}
-        </p>
-      </div>
+                : 'It must carry current now, or nothing can fall.'
+        }
+      />
       <Field
         label="Who isolates it"
         name="personOnSite"

@@ -1,5 +1,6 @@
 import { useState, type ReactNode } from 'react';
 import { UNIT_KINDS } from '../../domain/equipment/unit-type';
+import { Choice } from '../../components/ui/Choice';
 import { Field } from '../../components/ui/Field';
 import { Segmented } from '../../components/ui/Segmented';
 import { RANGES, chosen, type PanelProps } from '../../components/readings/form';
@@ -47,28 +48,20 @@ export function StringPanel({ form, faults, typed, choose }: PanelProps) {
           error={faults.units}
           onChange={(event) => typed({ units: event.target.value })}
         />
-        <div>
-          <label htmlFor="reading-module" className="mb-1 block font-medium">
-            Module
-          </label>
-          <select
-            id="reading-module"
-            name="module"
-            value={form.module}
-            onChange={(event) => choose({ module: event.target.value })}
-            className="min-h-[44px] w-full rounded border border-rule bg-sheet px-3 text-[16px] text-ink"
-          >
-            {SHEET_KEYS.map((key) => (
-              <option key={key} value={key}>
-                {`Typical, ${SHEETS[key].name} (${SHEETS[key].vocRef} V)`}
-              </option>
-            ))}
-            <option value="own">Own values, from its datasheet</option>
-          </select>
-          <p className="mt-1 text-sm text-ink-2">
-            Open-circuit voltage and cells decide; a like sheet is near enough.
-          </p>
-        </div>
+        <Choice
+          label="Module"
+          name="module"
+          value={form.module}
+          options={[
+            ...SHEET_KEYS.map((key) => ({
+              value: key,
+              label: `Typical, ${SHEETS[key].name} (${SHEETS[key].vocRef} V)`,
+            })),
+            { value: 'own', label: 'Own values, from its datasheet' },
+          ]}
+          onChange={(module) => choose({ module })}
+          hint="Open-circuit voltage and cells decide; a like sheet is near enough."
+        />
         {own && (
           <div className="grid grid-cols-2 gap-3">
             {OWN_FIELDS.map(({ key, label, unit }) => (

@@ -1,6 +1,8 @@
 import { useInfiniteQuery } from '@tanstack/react-query';
 import { useState } from 'react';
 import { Button } from '../../components/ui/Button';
+import { Choice } from '../../components/ui/Choice';
+import { NotRead } from '../../components/ui/NotRead';
 import { Notice } from '../../components/ui/Notice';
 import { Sheet } from '../../components/ui/Sheet';
 import { SiteTime } from '../../components/ui/Time';
@@ -73,32 +75,17 @@ export function EventsSheet({ site, initial, now, timeZone, zone, kind, onKind }
       id="events"
       title="Events"
       aside={
-        <label className="no-print inline-flex items-center gap-2">
-          Kind
-          <select
-            value={kind}
-            onChange={(event) => onKind(event.target.value as KindWanted)}
-            className="target rounded border border-rule bg-sheet px-2 text-ink"
-          >
-            <option value="all">All</option>
-            {KINDS.map((k) => (
-              <option key={k.value} value={k.value}>
-                {k.label}
-              </option>
-            ))}
-          </select>
-        </label>
+        <Choice
+          inline
+          className="no-print"
+          label="Kind"
+          value={kind}
+          options={[{ value: 'all', label: 'All' }, ...KINDS]}
+          onChange={(wanted) => onKind(wanted as KindWanted)}
+        />
       }
     >
-      {error && (
-        <Notice
-          kind="failed"
-          title="Events could not be read"
-          action={<Button onClick={() => void refetch()}>Try again</Button>}
-        >
-          {error.message}
-        </Notice>
-      )}
+      <NotRead error={error} title="Events could not be read" kind="failed" onRetry={() => refetch()} />
       {!error && !isFetching && events.length === 0 && (
         <Notice
           kind="empty"
