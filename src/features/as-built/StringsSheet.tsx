@@ -1,6 +1,7 @@
 import { useMemo } from 'react';
 import { Button, ButtonLink } from '../../components/ui/Button';
 import { Notice } from '../../components/ui/Notice';
+import { SearchInput } from '../../components/ui/SearchInput';
 import { Segmented } from '../../components/ui/Segmented';
 import { Sheet } from '../../components/ui/Sheet';
 import { Table, type Column } from '../../components/ui/Table';
@@ -82,14 +83,11 @@ export function StringsSheet({ built, view, mayWrite, unsaved, onView, onOpen, o
     <Sheet id="strings" title="Strings" flush>
       {built.strings.length > 0 && (
         <div className="no-print mb-3 flex flex-wrap items-center gap-x-5 gap-y-2">
-          <input
-            type="search"
-            aria-label="Find a string by name, serial or place on the roof"
+          <SearchInput
+            label="Find a string by name, serial or place on the roof"
             placeholder="Name, serial or place"
-            autoComplete="off"
             value={view.find}
-            onChange={(e) => onView({ find: e.target.value }, 'typed')}
-            className="target w-full rounded border border-rule bg-sheet px-2.5 text-[15px] placeholder:text-ink-3 sm:w-[220px]"
+            onChange={(typed) => onView({ find: typed }, 'typed')}
           />
           <Segmented
             label="Which strings"

@@ -3,6 +3,7 @@ import { Button, ButtonLink } from '../../components/ui/Button';
 import { Caution } from '../../components/ui/Caution';
 import { Heading } from '../../components/ui/Heading';
 import { Notice } from '../../components/ui/Notice';
+import { SearchInput } from '../../components/ui/SearchInput';
 import { Segmented } from '../../components/ui/Segmented';
 import { Sheet } from '../../components/ui/Sheet';
 import { number } from '../../drawings/numbers';
@@ -74,15 +75,12 @@ export function DesignBoard({ design, view: initialView }: Props) {
             className="no-print mb-3 flex flex-wrap items-center gap-x-5 gap-y-2"
             onSubmit={(event) => event.preventDefault()}
           >
-            <input
-              type="search"
+            <SearchInput
               name="q"
-              aria-label="Filter checks by string, clause or word"
+              label="Filter checks by string, clause or word"
               placeholder="String, clause or word"
-              autoComplete="off"
               value={view.q}
-              onChange={(event) => change({ q: event.target.value }, 'typed')}
-              className="target w-full rounded border border-rule bg-sheet px-2.5 text-[15px] placeholder:text-ink-3 sm:w-[220px]"
+              onChange={(typed) => change({ q: typed }, 'typed')}
             />
             <Segmented
               label="Which outcomes"

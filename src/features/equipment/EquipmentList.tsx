@@ -2,6 +2,7 @@ import { useMemo, type ReactNode } from 'react';
 import { Button, ButtonLink } from '../../components/ui/Button';
 import { Heading } from '../../components/ui/Heading';
 import { Notice } from '../../components/ui/Notice';
+import { SearchInput } from '../../components/ui/SearchInput';
 import { Segmented } from '../../components/ui/Segmented';
 import { Sheet } from '../../components/ui/Sheet';
 import { Table } from '../../components/ui/Table';
@@ -65,7 +66,7 @@ export function EquipmentList({ catalogue, view: initialView, mayWrite, children
           mayWrite && (
             <>
               <ButtonLink weight="primary" href={paths.equipmentNew(family)}>
-                Enter a {ONE[family]}
+                Enter {family === 'inverters' ? 'an' : 'a'} {ONE[family]}
               </ButtonLink>
               <ButtonLink href={paths.equipmentImport(family)}>Import a file</ButtonLink>
             </>
@@ -83,15 +84,12 @@ export function EquipmentList({ catalogue, view: initialView, mayWrite, children
           className="no-print mb-3 flex flex-wrap items-center gap-x-5 gap-y-2"
           onSubmit={(event) => event.preventDefault()}
         >
-          <input
-            type="search"
+          <SearchInput
             name="q"
-            aria-label={`Filter ${FAMILY_LABELS[family].toLowerCase()} by name`}
+            label={`Filter ${FAMILY_LABELS[family].toLowerCase()} by name`}
             placeholder="Filter by name"
-            autoComplete="off"
             value={view.q}
-            onChange={(event) => change({ q: event.target.value }, 'typed')}
-            className="target w-full rounded border border-rule bg-sheet px-2.5 text-[15px] placeholder:text-ink-3 sm:w-[220px]"
+            onChange={(typed) => change({ q: typed }, 'typed')}
           />
           <Segmented
             label="Archived types"

@@ -1,4 +1,5 @@
 import { ButtonLink } from '../../components/ui/Button';
+import { SearchInput } from '../../components/ui/SearchInput';
 import { Segmented } from '../../components/ui/Segmented';
 import { withQuery } from '../../lib/api';
 import type { FleetView } from '../../schemas/api/fleet';
@@ -18,15 +19,12 @@ export function FleetFilters({ view, onChange }: Props) {
       className="no-print mb-3 flex flex-wrap items-center gap-x-5 gap-y-2"
       onSubmit={(event) => event.preventDefault()}
     >
-      <input
-        type="search"
+      <SearchInput
         name="q"
-        aria-label="Filter sites by name or place"
+        label="Filter sites by name or place"
         placeholder="Filter by name or place"
-        autoComplete="off"
         value={view.q}
-        onChange={(event) => onChange({ q: event.target.value }, 'typed')}
-        className="target w-full rounded border border-rule bg-sheet px-2.5 text-[15px] placeholder:text-ink-3 sm:w-[220px]"
+        onChange={(typed) => onChange({ q: typed }, 'typed')}
       />
       <Segmented
         label="Which sites"

@@ -1,6 +1,7 @@
 import { useMemo, useState } from 'react';
 import { Button } from '../../components/ui/Button';
 import { Choice } from '../../components/ui/Choice';
+import { Field } from '../../components/ui/Field';
 import { Sheet } from '../../components/ui/Sheet';
 import { COLUMN_LABELS, type ImportColumn } from '../../domain/commissioning/import/columns';
 import { FAULT_CODES, type CellFault, type FaultCode } from '../../domain/commissioning/import/table';
@@ -76,16 +77,13 @@ export function FaultsSheet({ faults, count, texts, edits, onEdit, by }: Props) 
           ]}
           onChange={(v) => setCode(FAULT_CODES.find((c) => c === v) ?? '')}
         />
-        <label className="block">
-          <span className="mb-1 block font-medium">Find</span>
-          <input
-            type="search"
-            value={search}
-            onChange={(event) => setSearch(event.target.value)}
-            placeholder="row, string, serial"
-            className="min-h-[44px] w-full rounded border border-rule bg-sheet px-3 text-[16px] placeholder:text-ink-3"
-          />
-        </label>
+        <Field
+          label="Find"
+          type="search"
+          value={search}
+          onChange={(event) => setSearch(event.target.value)}
+          placeholder="row, string, serial"
+        />
         {proposed.length > 0 && (
           <Button onClick={takeAll}>
             Take {proposed.length === 1 ? 'the proposal' : `all ${number(proposed.length)} proposals`}

@@ -4,6 +4,7 @@ import { Button, ButtonLink } from '../../components/ui/Button';
 import { Dialog } from '../../components/ui/Dialog';
 import { Heading } from '../../components/ui/Heading';
 import { Notice } from '../../components/ui/Notice';
+import { SearchInput } from '../../components/ui/SearchInput';
 import { Segmented } from '../../components/ui/Segmented';
 import { Sheet } from '../../components/ui/Sheet';
 import { Table, type Column } from '../../components/ui/Table';
@@ -192,13 +193,11 @@ export function People({ initial, view: initialView, timeZone }: Props) {
           className="no-print mb-3 flex flex-wrap items-center gap-x-4 gap-y-2"
           onSubmit={(event) => event.preventDefault()}
         >
-          <input
-            type="search"
-            aria-label="Filter by name or address"
-            placeholder="Filter by name or address"
+          <SearchInput
+            label="Filter by name or address"
             value={view.q}
-            onChange={(event) => setView({ q: event.target.value }, 'typed')}
-            className="target w-full rounded border border-rule bg-sheet px-2.5 text-[15px] placeholder:text-ink-3 sm:w-[240px]"
+            onChange={(typed) => setView({ q: typed }, 'typed')}
+            className="sm:w-[240px]"
           />
           <Segmented
             label="Role"

@@ -4,7 +4,9 @@ import { CauseSheet } from '../../components/causes/CauseSheet';
 import { Button, ButtonLink } from '../../components/ui/Button';
 import { Caution } from '../../components/ui/Caution';
 import { LiveHeading } from '../../components/ui/LiveHeading';
+import { NotRead } from '../../components/ui/NotRead';
 import { Notice } from '../../components/ui/Notice';
+import { SearchInput } from '../../components/ui/SearchInput';
 import { Segmented } from '../../components/ui/Segmented';
 import { Sheet } from '../../components/ui/Sheet';
 import { useNow } from '../../components/ui/Time';
@@ -107,31 +109,26 @@ export function ShutdownBoard({ initial, view: initialView, timeZone }: Props) {
           people; local code comes first.
         </Caution>
       </div>
-      {error && (
-        <div className="mb-6">
-          <Notice
-            kind="failed"
-            title="The state of shutdown could not be read anew"
-            action={<Button onClick={() => void refetch()}>Try again</Button>}
-          >
-            {error.message} What is shown may be old.
-          </Notice>
-        </div>
-      )}
+      <NotRead
+        error={error}
+        title="The state of shutdown could not be read anew"
+        kind="failed"
+        onRetry={() => refetch()}
+        className="mb-6"
+      >
+        What is shown may be old.
+      </NotRead>
       <form
         action={paths.shutdown()}
         className="no-print mb-6 flex flex-wrap items-center gap-x-5 gap-y-2"
         onSubmit={(event) => event.preventDefault()}
       >
-        <input
-          type="search"
+        <SearchInput
           name="q"
-          aria-label="Filter by site, part, string or serial"
-          placeholder="Filter by site, part, string or serial"
-          autoComplete="off"
+          label="Filter by site, part, string or serial"
           value={view.q}
-          onChange={(event) => change({ q: event.target.value }, 'typed')}
-          className="target w-full rounded border border-rule bg-sheet px-2.5 text-[15px] placeholder:text-ink-3 sm:w-[290px]"
+          onChange={(typed) => change({ q: typed }, 'typed')}
+          className="sm:w-[290px]"
         />
         <Segmented
           label="Which units"

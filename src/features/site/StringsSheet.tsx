@@ -1,6 +1,7 @@
 import { useMemo, useState } from 'react';
 import { StateTag } from '../../components/states/StateTag';
 import { Notice } from '../../components/ui/Notice';
+import { SearchInput } from '../../components/ui/SearchInput';
 import { Sheet } from '../../components/ui/Sheet';
 import { Table, type Column } from '../../components/ui/Table';
 import { Tag } from '../../components/ui/Tag';
@@ -175,14 +176,12 @@ export function StringsSheet({ site, strings }: { site: string; strings: readonl
       }
     >
       {strings.length > 8 && (
-        <input
-          type="search"
-          aria-label="Filter strings by name or serial"
+        <SearchInput
+          label="Filter strings by name or serial"
           placeholder="Filter by name or serial"
-          autoComplete="off"
           value={wanted}
-          onChange={(event) => setWanted(event.target.value)}
-          className="target no-print mb-2 w-full rounded border border-rule bg-sheet px-2.5 text-[15px] placeholder:text-ink-3 sm:w-[220px]"
+          onChange={setWanted}
+          className="no-print mb-2 sm:w-[220px]"
         />
       )}
       <Table
