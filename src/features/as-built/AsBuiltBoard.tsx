@@ -1,8 +1,8 @@
 import { useQuery } from '@tanstack/react-query';
 import { useEffect, useMemo, useState } from 'react';
-import { Button, ButtonLink } from '../../components/ui/Button';
+import { ButtonLink } from '../../components/ui/Button';
 import { Heading } from '../../components/ui/Heading';
-import { Notice } from '../../components/ui/Notice';
+import { NotRead } from '../../components/ui/NotRead';
 import { queryClient } from '../../lib/query-client';
 import { useViewInUrl } from '../../lib/view-in-url';
 import type { AsBuilt, AsBuiltView, PartAdded } from '../../schemas/api/as-built';
@@ -84,17 +84,15 @@ export function AsBuiltBoard({ initial, view: initialView, mayWrite, timeZones }
         <ButtonLink href={paths.designChecks(site)}>Design checks</ButtonLink>
         <ButtonLink href={paths.asBuiltHistory(site)}>History</ButtonLink>
       </nav>
-      {error && (
-        <div className="mb-6">
-          <Notice
-            kind="failed"
-            title="The as-built could not be read anew"
-            action={<Button onClick={() => void refetch()}>Try again</Button>}
-          >
-            {error.message} What is shown may be old.
-          </Notice>
-        </div>
-      )}
+      <NotRead
+        error={error}
+        title="The as-built could not be read anew"
+        kind="failed"
+        onRetry={() => refetch()}
+        className="mb-6"
+      >
+        What is shown may be old.
+      </NotRead>
       <div className="grid gap-5 lg:grid-cols-[minmax(0,1fr)_360px]">
         {/* on a phone what strings name comes between the strings and the rest */}
         <div className="contents min-w-0 content-start gap-5 lg:grid">

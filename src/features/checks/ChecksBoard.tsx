@@ -5,6 +5,7 @@ import { Button, ButtonLink } from '../../components/ui/Button';
 import { Caution } from '../../components/ui/Caution';
 import { Field } from '../../components/ui/Field';
 import { Heading } from '../../components/ui/Heading';
+import { NotRead } from '../../components/ui/NotRead';
 import { Notice } from '../../components/ui/Notice';
 import { Segmented } from '../../components/ui/Segmented';
 import { Sheet } from '../../components/ui/Sheet';
@@ -84,13 +85,7 @@ export function ChecksBoard({ initial, view: first, mayWrite, mayRecordEvidence 
         }
         actions={<ButtonLink href={paths.capture(site.id)}>Record on the roof</ButtonLink>}
       />
-      {error && (
-        <div className="mb-4">
-          <Notice kind="stale" title="The checks could not be read again">
-            {error.message}
-          </Notice>
-        </div>
-      )}
+      <NotRead error={error} title="The checks could not be read again" className="mb-4" />
       <div className="grid gap-5 xl:grid-cols-[200px_minmax(0,1fr)]">
         <Steps site={site.id} steps={page.steps} here="install_checks" />
         <div className="grid min-w-0 content-start gap-5">

@@ -5,6 +5,7 @@ import { Steps } from '../../components/commissioning/Steps';
 import { Button, ButtonLink } from '../../components/ui/Button';
 import { Field } from '../../components/ui/Field';
 import { Heading } from '../../components/ui/Heading';
+import { NotRead } from '../../components/ui/NotRead';
 import { Notice } from '../../components/ui/Notice';
 import { Segmented } from '../../components/ui/Segmented';
 import { Sheet } from '../../components/ui/Sheet';
@@ -149,13 +150,7 @@ export function ReadingsBoard({ initial, view: first, mayWrite }: Props) {
         }
         actions={<ButtonLink href={paths.capture(site.id)}>Record on the roof</ButtonLink>}
       />
-      {error && (
-        <div className="mb-4">
-          <Notice kind="stale" title="The readings could not be read again">
-            {error.message}
-          </Notice>
-        </div>
-      )}
+      <NotRead error={error} title="The readings could not be read again" className="mb-4" />
       <div className="grid gap-5 xl:grid-cols-[200px_minmax(0,1fr)]">
         <Steps site={site.id} steps={page.steps} here="meter_readings" />
         <div className="grid min-w-0 content-start gap-5">

@@ -7,6 +7,7 @@ import { Steps } from '../../components/commissioning/Steps';
 import { Caution } from '../../components/ui/Caution';
 import { Heading } from '../../components/ui/Heading';
 import { LiveMark } from '../../components/ui/Live';
+import { NotRead } from '../../components/ui/NotRead';
 import { Notice } from '../../components/ui/Notice';
 import { useNow } from '../../components/ui/Time';
 import { api } from '../../lib/api';
@@ -110,13 +111,7 @@ export function RollCall({ initial, mayRun, mayPlace, view, typed }: Props) {
       <div className="-mt-3 mb-3 min-h-[22px]">
         <LiveMark lostSince={lost?.since ? lost.since.toISOString() : null} timeZone={page.site.timeZone} />
       </div>
-      {error && (
-        <div className="mb-4">
-          <Notice kind="stale" title="The roll call could not be read again">
-            {error.message}
-          </Notice>
-        </div>
-      )}
+      <NotRead error={error} title="The roll call could not be read again" className="mb-4" />
       <div className="grid gap-5 lg:grid-cols-[minmax(0,1fr)_340px] lg:grid-rows-[auto_auto_1fr] xl:grid-cols-[200px_minmax(0,1fr)_340px] xl:grid-rows-[auto_1fr]">
         <div className="grid content-start gap-5 lg:col-start-2 lg:row-start-2 xl:col-start-3 xl:row-start-1">
           {waits && (

@@ -10,7 +10,7 @@ import {
 import { ButtonLink } from '../../components/ui/Button';
 import { Caution } from '../../components/ui/Caution';
 import { LiveHeading } from '../../components/ui/LiveHeading';
-import { Notice } from '../../components/ui/Notice';
+import { NotRead } from '../../components/ui/NotRead';
 import { Sheet } from '../../components/ui/Sheet';
 import { SiteTime } from '../../components/ui/Time';
 import { openGaps } from '../../domain/commissioning/steps';
@@ -141,13 +141,7 @@ export function SiteOverview({ initial, at, mayAccept, children }: Props) {
         timeZone={site.timeZone}
         crumbs={[{ label: 'Commissioning', href: paths.commissioning() }, { label: site.name }]}
       />
-      {error && (
-        <div className="mb-4">
-          <Notice kind="stale" title="The steps could not be read again">
-            {error.message}
-          </Notice>
-        </div>
-      )}
+      <NotRead error={error} title="The steps could not be read again" className="mb-4" />
       <div className="grid gap-5 lg:grid-cols-[minmax(0,1fr)_340px]">
         <div className="grid min-w-0 content-start gap-5">
           {site.steps.map((step) => (

@@ -2,8 +2,8 @@ import { useQuery } from '@tanstack/react-query';
 import { useMemo } from 'react';
 import { CauseSheet } from '../../components/causes/CauseSheet';
 import { byGravity } from '../../components/causes/words';
-import { Button } from '../../components/ui/Button';
 import { LiveHeading } from '../../components/ui/LiveHeading';
+import { NotRead } from '../../components/ui/NotRead';
 import { Notice } from '../../components/ui/Notice';
 import { Sheet } from '../../components/ui/Sheet';
 import { useNow } from '../../components/ui/Time';
@@ -54,17 +54,15 @@ export function FleetBoard({ initial, view: initialView, missed, timeZone }: Pro
   return (
     <>
       <LiveHeading finding={finding} status={status} timeZone={readerZone} />
-      {error && (
-        <div className="mb-6">
-          <Notice
-            kind="failed"
-            title="The fleet could not be read anew"
-            action={<Button onClick={() => void refetch()}>Try again</Button>}
-          >
-            {error.message} What is shown may be old.
-          </Notice>
-        </div>
-      )}
+      <NotRead
+        error={error}
+        title="The fleet could not be read anew"
+        kind="failed"
+        onRetry={() => refetch()}
+        className="mb-6"
+      >
+        What is shown may be old.
+      </NotRead>
       {missed && missed.items.length > 0 && (
         <SinceLastLook missed={missed} now={initial.at} timeZone={readerZone} />
       )}

@@ -3,6 +3,7 @@ import { useState } from 'react';
 import { Steps } from '../../components/commissioning/Steps';
 import { Button, ButtonLink } from '../../components/ui/Button';
 import { Heading } from '../../components/ui/Heading';
+import { NotRead } from '../../components/ui/NotRead';
 import { Notice } from '../../components/ui/Notice';
 import { Sheet } from '../../components/ui/Sheet';
 import { SiteTime } from '../../components/ui/Time';
@@ -165,13 +166,7 @@ export function Handover({ initial, mayMake }: Props) {
         finding={words.finding}
         sentence={words.sentence}
       />
-      {error && (
-        <div className="mb-4">
-          <Notice kind="stale" title="The handover could not be read again">
-            {error.message}
-          </Notice>
-        </div>
-      )}
+      <NotRead error={error} title="The handover could not be read again" className="mb-4" />
       <div className="grid gap-5 lg:grid-cols-[minmax(0,1fr)_340px] xl:grid-cols-[200px_minmax(0,1fr)_340px]">
         <div className="lg:col-span-2 xl:col-span-1">
           <Steps site={page.site.id} steps={page.site.steps} here="handover" />

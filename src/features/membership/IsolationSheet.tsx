@@ -3,6 +3,7 @@ import { TimeChart } from '../../components/charts/TimeChart';
 import type { SlotRef } from '../../components/placements/evidence';
 import { Button } from '../../components/ui/Button';
 import { Caution } from '../../components/ui/Caution';
+import { NotRead } from '../../components/ui/NotRead';
 import { Notice } from '../../components/ui/Notice';
 import { Sheet } from '../../components/ui/Sheet';
 import { SiteTime, useNow } from '../../components/ui/Time';
@@ -89,13 +90,7 @@ export function IsolationSheet(props: Props) {
             proof that anything is dead. Qualified people, the site’s procedure and local code first.
           </Caution>
         </div>
-        {error && (
-          <div className="mb-4">
-            <Notice kind="stale" title="The watch could not be read again">
-              {error.message}
-            </Notice>
-          </div>
-        )}
+        <NotRead error={error} title="The watch could not be read again" className="mb-4" />
         {open ? (
           <div className="grid gap-4">
             <Said run={open} />

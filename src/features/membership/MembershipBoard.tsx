@@ -2,8 +2,8 @@ import { useQuery } from '@tanstack/react-query';
 import { useState } from 'react';
 import { SwapDialog } from '../../components/placements/SwapDialog';
 import type { SlotRef } from '../../components/placements/evidence';
-import { Button } from '../../components/ui/Button';
 import { LiveHeading } from '../../components/ui/LiveHeading';
+import { NotRead } from '../../components/ui/NotRead';
 import { Notice } from '../../components/ui/Notice';
 import { Segmented } from '../../components/ui/Segmented';
 import { api } from '../../lib/api';
@@ -76,16 +76,8 @@ export function MembershipBoard({ initial, view: asked, mayWrite }: Props) {
         status={status}
         timeZone={timeZone}
       />
-      <div className="mb-4 grid gap-3">
-        {error && (
-          <Notice
-            kind="stale"
-            title="The currents could not be read again"
-            action={<Button onClick={() => void refetch()}>Try again</Button>}
-          >
-            {error.message}
-          </Notice>
-        )}
+      <div className="mb-4 grid gap-3 empty:hidden">
+        <NotRead error={error} title="The currents could not be read again" onRetry={() => refetch()} />
         {done && (
           <Notice kind="done" title={done}>
             The loggers get the new roster. Reports from before the change no longer count for these units.{' '}

@@ -3,10 +3,9 @@ import { useMemo } from 'react';
 import { CauseSheet } from '../../components/causes/CauseSheet';
 import { byGravity } from '../../components/causes/words';
 import { TraceSheet } from '../../components/trace/TraceSheet';
-import { Button } from '../../components/ui/Button';
 import { Caution } from '../../components/ui/Caution';
 import { LiveHeading } from '../../components/ui/LiveHeading';
-import { Notice } from '../../components/ui/Notice';
+import { NotRead } from '../../components/ui/NotRead';
 import { useNow } from '../../components/ui/Time';
 import { clocksDiffer, useReaderZone } from '../../components/ui/reader-zone';
 import { useLive } from '../../lib/live-hook';
@@ -86,17 +85,15 @@ export function SiteBoard({ initial, events, kind: initialKind }: Props) {
           Who is in which string
         </a>
       </nav>
-      {error && (
-        <div className="mb-6">
-          <Notice
-            kind="failed"
-            title="The site could not be read anew"
-            action={<Button onClick={() => void refetch()}>Try again</Button>}
-          >
-            {error.message} What is shown may be old.
-          </Notice>
-        </div>
-      )}
+      <NotRead
+        error={error}
+        title="The site could not be read anew"
+        kind="failed"
+        onRetry={() => refetch()}
+        className="mb-6"
+      >
+        What is shown may be old.
+      </NotRead>
       {causes.length > 0 && (
         <section aria-labelledby="causes" className="mb-6">
           <h2 id="causes" className="mb-2.5 text-[15px] leading-5 tracking-[-0.01em]">

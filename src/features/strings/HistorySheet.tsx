@@ -1,8 +1,7 @@
 import { useQuery } from '@tanstack/react-query';
 import { useCallback, useMemo, useState } from 'react';
 import { TimeChart } from '../../components/charts/TimeChart';
-import { Button } from '../../components/ui/Button';
-import { Notice } from '../../components/ui/Notice';
+import { NotRead } from '../../components/ui/NotRead';
 import { Segmented } from '../../components/ui/Segmented';
 import { Sheet } from '../../components/ui/Sheet';
 import { localDay, longDate, shortDate } from '../../drawings/times';
@@ -95,15 +94,12 @@ export function HistorySheet({ id, subject, initial, today: now }: Props) {
         />
       }
     >
-      {whole.isError && (
-        <Notice
-          kind="failed"
-          title="The history could not be fetched"
-          action={<Button onClick={() => void whole.refetch()}>Try again</Button>}
-        >
-          {whole.error.message}
-        </Notice>
-      )}
+      <NotRead
+        error={whole.error}
+        title="The history could not be fetched"
+        kind="failed"
+        onRetry={() => whole.refetch()}
+      />
       <div aria-busy={whole.isFetching} className={whole.isPlaceholderData ? 'opacity-60' : ''}>
         <TimeChart
           key={`${from} ${to}`}

@@ -4,7 +4,7 @@ import { ButtonLink } from '../../components/ui/Button';
 import { Caution } from '../../components/ui/Caution';
 import { Heading } from '../../components/ui/Heading';
 import { LiveMark } from '../../components/ui/Live';
-import { Notice } from '../../components/ui/Notice';
+import { NotRead } from '../../components/ui/NotRead';
 import { energy } from '../../drawings/numbers';
 import { clock } from '../../drawings/times';
 import { TraceSheet } from '../../components/trace/TraceSheet';
@@ -90,11 +90,7 @@ function Page({ page: initial, history }: Props) {
           lostSince={!status.live && status.since ? status.since.toISOString() : null}
           timeZone={site.timeZone}
         />
-        {failed && (
-          <Notice kind="stale" title="The newest figures could not be fetched">
-            {failed.message}
-          </Notice>
-        )}
+        <NotRead error={failed} title="The newest figures could not be fetched" />
       </div>
       <p className="sr-only" role="status">
         {finding.heading}

@@ -2,7 +2,7 @@ import { useQuery } from '@tanstack/react-query';
 import { useMemo, useState } from 'react';
 import { TimeChart } from '../../components/charts/TimeChart';
 import { Button } from '../../components/ui/Button';
-import { Notice } from '../../components/ui/Notice';
+import { NotRead } from '../../components/ui/NotRead';
 import { Segmented } from '../../components/ui/Segmented';
 import { Sheet } from '../../components/ui/Sheet';
 import type { StringPage, UnitQuantity } from '../../schemas/api/string';
@@ -71,15 +71,12 @@ export function UnitsSheet({ page, chosen, onChoose }: Props) {
       {!open && (
         <Button onClick={() => setOpen(true)}>Show the lines of all {string.counts.units} units</Button>
       )}
-      {units.isError && (
-        <Notice
-          kind="failed"
-          title="The lines could not be fetched"
-          action={<Button onClick={() => void units.refetch()}>Try again</Button>}
-        >
-          {units.error.message}
-        </Notice>
-      )}
+      <NotRead
+        error={units.error}
+        title="The lines could not be fetched"
+        kind="failed"
+        onRetry={() => units.refetch()}
+      />
       {open && units.isPending && <p role="status">Fetching the day’s reports …</p>}
       {model && (
         <>

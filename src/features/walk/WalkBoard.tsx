@@ -1,7 +1,8 @@
 import { useQuery } from '@tanstack/react-query';
-import { Button, ButtonLink } from '../../components/ui/Button';
+import { ButtonLink } from '../../components/ui/Button';
 import { Caution } from '../../components/ui/Caution';
 import { LiveHeading } from '../../components/ui/LiveHeading';
+import { NotRead } from '../../components/ui/NotRead';
 import { Notice } from '../../components/ui/Notice';
 import { Sheet } from '../../components/ui/Sheet';
 import { Walk } from '../../drawings/Walk';
@@ -67,17 +68,14 @@ export function WalkBoard({ initial, view: asked }: Props) {
         status={status}
         timeZone={timeZone}
       />
-      {error && (
-        <div className="mb-5">
-          <Notice
-            kind="stale"
-            title="The walk could not be read again"
-            action={<Button onClick={() => void refetch()}>Try again</Button>}
-          >
-            {error.message} Where the stops are still holds.
-          </Notice>
-        </div>
-      )}
+      <NotRead
+        error={error}
+        title="The walk could not be read again"
+        onRetry={() => refetch()}
+        className="mb-5"
+      >
+        Where the stops are still holds.
+      </NotRead>
       <div className="grid gap-5 lg:grid-cols-[minmax(0,1fr)_minmax(360px,420px)]">
         <div className="grid min-w-0 content-start gap-5 self-start lg:sticky lg:top-4">
           {stops.length > 0 && drawable && (
