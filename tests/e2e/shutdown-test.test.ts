@@ -93,22 +93,19 @@ async function accept(): Promise<void> {
   await button('Accept and go on').click();
   await button('Start watching').click();
 }
+/** Enters a password and signs; gives the answer's status. */
+async function trySigning(password: string): Promise<number> {
+  await page.getByLabel('Your password again').fill(password);
+  const [answer] = await Promise.all([
+    page.waitForResponse((r) => r.url().endsWith('/sign')),
+    button('Sign this test').click(),
+  ]);
+  return answer.status();
+}
+/** The last seconds may still trickle in: then the page asks to look again first. */
 async function sign(): Promise<void> {
-  await expect.poll(() => button('Sign this test').count(), SHORT).toBe(1);
-  // figures may still come in: what is signed is what is shown
-  await expect
-    .poll(async () => {
-      if (await page.getByRole('heading', { name: 'Signature' }).count()) return true;
-      await page
-        .getByLabel('Your password again')
-        .fill(PASSWORD, { timeout: 2000 })
-        .catch(() => undefined);
-      await button('Sign this test')
-        .click({ timeout: 2000 })
-        .catch(() => undefined);
-      return page.getByRole('heading', { name: 'Signature' }).count().then(Boolean);
-    }, LONG)
-    .toBe(true);
+  await expect.poll(() => trySigning(PASSWORD), LONG).toBe(200);
+  await page.getByRole('heading', { name: 'Signature' }).waitFor();
 }
 
 describe('a shutdown test on a phone', { timeout: 240_000 }, () => {
@@ -208,14 +205,8 @@ describe('a shutdown test on a phone', { timeout: 240_000 }, () => {
   });
 
   it('is signed with the password entered again, and with no other', async () => {
-    // the last seconds may still trickle in: then it asks to look again first
-    await expect
-      .poll(async () => {
-        await page.getByLabel('Your password again').fill('not this one');
-        await button('Sign this test').click();
-        return page.getByText('This is not your password.', { exact: true }).count();
-      }, LONG)
-      .toBe(1);
+    await expect.poll(() => trySigning('not this one'), LONG).toBe(422);
+    await page.getByText('This is not your password.', { exact: true }).waitFor();
     await sign();
     const text = plain(await page.locator('#signature').innerText());
     expect(text).toContain('They are the same.');

@@ -30,7 +30,7 @@ beforeAll(async () => {
 afterAll(() => db.drop());
 beforeEach(async () => {
   await db.owner.query(
-    `delete from site_quarter; delete from site_day; delete from shutdown_test; delete from inverter_state`,
+    `truncate shutdown_test cascade; delete from site_quarter; delete from site_day; delete from inverter_state`,
   );
 });
 
@@ -185,17 +185,17 @@ describe('the state of a roof', () => {
     expect(roof.now.reporting).toBe(slots.filter((s) => s.serial && s.kind !== 'shutdown_only').length);
   });
   it('shows the newest shutdown test that nothing corrects', async () => {
-    const add = async (day: string, result: string): Promise<number> => {
+    const add = async (day: string, result: string, supersedes: number[] = []): Promise<number> => {
       const { rows } = await db.owner.query<{ id: number }>(
-        `insert into shutdown_test (site_id, at, made_by, result, strings) values ($1, $2, 'Per Aalto', $3, 8) returning id`,
-        [fleet.site(CLINIC).id, `${day}T10:00:00Z`, result],
+        `insert into shutdown_test (site_id, at, made_by, result, strings, supersedes)
+         values ($1, $2, 'Per Aalto', $3, 8, $4) returning id`,
+        [fleet.site(CLINIC).id, `${day}T10:00:00Z`, result, supersedes],
       );
       return rows[0]?.id ?? 0;
     };
-    const right = await add('2026-06-01', 'passed');
     const wrong = await add('2026-06-02', 'failed');
     expect((await read(owner, CLINIC, at)).lastTest?.result).toBe('failed');
-    await db.owner.query(`update shutdown_test set superseded_by = $1 where id = $2`, [right, wrong]);
+    await add('2026-06-01', 'passed', [wrong]);
     expect((await read(owner, CLINIC, at)).lastTest).toEqual({
       at: '2026-06-01T10:00:00.000Z',
       result: 'passed',
