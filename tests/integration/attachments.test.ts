@@ -7,12 +7,12 @@ import { afterAll, beforeAll, beforeEach, describe, expect, it } from 'vitest';
 import type { Actor } from '../../src/domain/access/permissions';
 import { PHOTO_MAX_BYTES, attachmentQuery, type AttachmentQuery } from '../../src/schemas/api/attachments';
 import { asActor } from '../../src/server/db/transaction';
-import { AppError } from '../../src/server/errors';
 import { fileReply } from '../../src/server/files/file-reply';
 import { attachmentByRef, attachmentBytes, attachmentsOfSite } from '../../src/server/queries/attachments';
 import { receiveFile, storeAttachment } from '../../src/server/services/store-attachment';
 import { testDatabase, type TestDatabase } from '../support/database';
 import { testFleet, type TestFleet } from '../support/fleet';
+import { failure } from '../support/refusal';
 
 const HALL = 'Old Tannery Market Hall';
 let db: TestDatabase;
@@ -56,14 +56,6 @@ const request = (body: Body, headers: Record<string, string> = {}): Request =>
 async function send(body: Body, what = query(), actor = technician, headers = {}) {
   const file = await receiveFile(actor, fleet.site(HALL).ref, request(body, headers), what);
   return asActor(actor, (tx) => storeAttachment(tx, actor, fleet.site(HALL).ref, what, file, now));
-}
-async function failure(work: Promise<unknown>): Promise<AppError> {
-  const error = await work.then(
-    () => undefined,
-    (e: unknown) => e,
-  );
-  if (error instanceof AppError) return error;
-  throw new Error('it should have been refused', { cause: error });
 }
 const picture = (width: number, height: number) =>
   sharp({ create: { width, height, channels: 3, background: '#4a7' } });

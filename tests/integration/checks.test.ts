@@ -6,12 +6,12 @@ import { CHECK_KEYS, type CheckKey } from '../../src/domain/commissioning/checks
 import { checkInput, checkRecord, type CheckInput } from '../../src/schemas/api/checks';
 import { captureSnapshot as snapshotSchema } from '../../src/schemas/api/capture';
 import { asActor } from '../../src/server/db/transaction';
-import { AppError } from '../../src/server/errors';
 import { captureSnapshot, snapshotTag } from '../../src/server/services/capture-snapshot';
 import { recordCheck } from '../../src/server/services/record-check';
 import { signOffString } from '../../src/server/services/sign-off';
 import { testDatabase, type TestDatabase } from '../support/database';
 import { testFleet, type TestFleet } from '../support/fleet';
+import { failure } from '../support/refusal';
 
 const HALL = 'Old Tannery Market Hall';
 let db: TestDatabase;
@@ -58,14 +58,6 @@ const record = (what: CheckInput, actor = technician, at = now, where = site) =>
   asActor(actor, (tx) => recordCheck(tx, actor, where, what, at));
 const snapshot = (actor = technician) =>
   asActor(actor, (tx) => captureSnapshot(tx, site, { id: randomUUID(), name: 'x', role: actor.role }, now));
-async function failure(work: Promise<unknown>): Promise<AppError> {
-  const error = await work.then(
-    () => undefined,
-    (e: unknown) => e,
-  );
-  if (error instanceof AppError) return error;
-  throw new Error('it should have been refused', { cause: error });
-}
 const count = async (table: string): Promise<number> =>
   Number((await db.owner.query<{ n: string }>(`select count(*) as n from ${table}`)).rows[0]?.n);
 async function connector(name: string, family: string, organisation = technician.organisationId) {

@@ -6,7 +6,6 @@ import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import type { Actor } from '../../src/domain/access/permissions';
 import { openGaps } from '../../src/domain/commissioning/steps';
 import { asActor } from '../../src/server/db/transaction';
-import { AppError } from '../../src/server/errors';
 import { lettersReceived, startLocalPost, type LocalPost } from '../../src/server/mail/local-post';
 import { mailTransport, sendDue } from '../../src/server/mail/send-outbox';
 import { paperOf } from '../../src/server/queries/handover';
@@ -17,6 +16,7 @@ import { makeHandover } from '../../src/server/services/make-handover';
 import { testDatabase, type TestDatabase } from '../support/database';
 import { testFleet, type TestFleet } from '../support/fleet';
 import { pdfPages } from '../support/pdf';
+import { failure } from '../support/refusal';
 
 const HALL = 'Old Tannery Market Hall';
 const CLINIC = 'Weirside Clinic';
@@ -43,14 +43,6 @@ afterAll(async () => {
   await rm(folder, { recursive: true, force: true });
 });
 
-async function failure(work: Promise<unknown>): Promise<AppError> {
-  const error = await work.then(
-    () => undefined,
-    (e: unknown) => e,
-  );
-  if (error instanceof AppError) return error;
-  throw new Error('it should have been refused', { cause: error });
-}
 const ref = (site: string) => fleet.site(site).ref;
 const steps = (actor: Actor, site: string) => asActor(actor, (tx) => siteAndItsSteps(tx, ref(site)));
 const gapsOf = async (site: string) => openGaps((await steps(manager, site)).steps);

@@ -3,7 +3,6 @@ import type { Actor } from '../../src/domain/access/permissions';
 import { isolationPage as isolationSchema, type IsolationPage } from '../../src/schemas/api/isolation';
 import { membershipPage as membershipSchema } from '../../src/schemas/api/membership';
 import { asActor } from '../../src/server/db/transaction';
-import { AppError } from '../../src/server/errors';
 import {
   isolationPage,
   startIsolation,
@@ -14,6 +13,7 @@ import { membershipPage, membershipUnits } from '../../src/server/services/membe
 import { generator } from '../../src/domain/output/sample-plane';
 import { testDatabase, type TestDatabase } from '../support/database';
 import { testFleet, type TestFleet } from '../support/fleet';
+import { failure } from '../support/refusal';
 
 /**
  * Frames of a site written as the ingest would: each string with a current of its own; C3-4 and D1-4 sit in each
@@ -90,14 +90,6 @@ const stop = (when: Date, actor = technician) =>
   asActor(actor, (tx) => stopIsolation(tx, actor, fleet.site(HALL).ref, when, null));
 const read = (when: Date, actor = technician): Promise<IsolationPage> =>
   asActor(actor, (tx) => isolationPage(tx, fleet.site(HALL).ref, when));
-async function failure(work: Promise<unknown>): Promise<AppError> {
-  const error = await work.then(
-    () => undefined,
-    (e: unknown) => e,
-  );
-  if (error instanceof AppError) return error;
-  throw new Error('it should have been refused', { cause: error });
-}
 const named = (page: IsolationPage, fate: string): string[] =>
   (page.open ?? page.runs[0])?.finding.units
     .filter((u) => u.fate === fate)

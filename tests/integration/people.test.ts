@@ -3,7 +3,6 @@ import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import type { Actor } from '../../src/domain/access/permissions';
 import { signedInBy } from '../../src/server/auth/sessions';
 import { asActor } from '../../src/server/db/transaction';
-import { AppError } from '../../src/server/errors';
 import {
   beginSecondFactor,
   changePassword,
@@ -20,6 +19,7 @@ import { changePerson, invite, peoplePage, withdrawInvitation } from '../../src/
 import { signIn } from '../../src/server/services/sign-in';
 import { testDatabase, type TestDatabase } from '../support/database';
 import { PASSWORD, testFleet, type TestFleet } from '../support/fleet';
+import { failure } from '../support/refusal';
 
 const CLINIC = 'Weirside Clinic';
 const HERE = { address: '192.0.2.7', agent: 'Mozilla/5.0 (X11; Linux x86_64) Firefox/140.0' };
@@ -39,14 +39,6 @@ beforeAll(async () => {
 });
 afterAll(() => db.drop());
 
-async function failure(work: Promise<unknown>): Promise<AppError> {
-  const error = await work.then(
-    () => undefined,
-    (e: unknown) => e,
-  );
-  if (error instanceof AppError) return error;
-  throw new Error('it should have been refused', { cause: error });
-}
 const at = (minutes = 0) => new Date(Date.now() + minutes * 60_000);
 const sendInvitation = (actor: Actor, change: Partial<Parameters<typeof invite>[2]> = {}) =>
   asActor(actor, (tx) =>

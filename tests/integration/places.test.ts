@@ -4,13 +4,13 @@ import { stopsOfPage } from '../../src/features/walk/stops';
 import { walkPage as walkPageSchema } from '../../src/schemas/api/walk';
 import type { PlaceBody } from '../../src/schemas/api/placing';
 import { asActor } from '../../src/server/db/transaction';
-import { AppError } from '../../src/server/errors';
 import { placeHeard } from '../../src/server/services/place-heard';
 import { rollCallPage } from '../../src/server/services/roll-call-page';
 import { walkPage } from '../../src/server/services/walk';
 import { tallyOf } from '../../src/features/commissioning/tally';
 import { testDatabase, type TestDatabase } from '../support/database';
 import { testFleet, type TestFleet } from '../support/fleet';
+import { failure } from '../support/refusal';
 
 /** What somebody read on the roof goes into the as-built with its history; the walk shows what is out of order. */
 const HALL = 'Old Tannery Market Hall';
@@ -48,14 +48,6 @@ const slot = (name: string, position: number, serial: string | null, expected: s
 const told = { seen: 'label reads so, upper row', reason: 'found on the walk', checked: true as const };
 const write = (body: PlaceBody, actor = technician, site = HALL) =>
   asActor(actor, (tx) => placeHeard(tx, actor, fleet.site(site).ref, body, new Date(), '127.0.0.1'));
-async function failure(work: Promise<unknown>): Promise<AppError> {
-  const error = await work.then(
-    () => undefined,
-    (e: unknown) => e,
-  );
-  if (error instanceof AppError) return error;
-  throw new Error('it should have been refused', { cause: error });
-}
 async function hear(serial: string, gateway = 1): Promise<void> {
   const { id, loggers } = fleet.site(HALL);
   await db.owner.query(

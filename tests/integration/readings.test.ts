@@ -3,11 +3,11 @@ import { afterAll, beforeAll, beforeEach, describe, expect, it } from 'vitest';
 import type { Actor } from '../../src/domain/access/permissions';
 import { readingInput, readingRecord, type ReadingInput } from '../../src/schemas/api/readings';
 import { asActor } from '../../src/server/db/transaction';
-import { AppError } from '../../src/server/errors';
 import { commissioningFacts } from '../../src/server/queries/commissioning-facts';
 import { recordReading } from '../../src/server/services/record-reading';
 import { testDatabase, type TestDatabase } from '../support/database';
 import { testFleet, type TestFleet } from '../support/fleet';
+import { failure } from '../support/refusal';
 
 const HALL = 'Old Tannery Market Hall';
 /** Its strings are shutdown-only. */
@@ -67,14 +67,6 @@ const input = (string: SeededString, more: Partial<ReadingInput> = {}): ReadingI
   });
 const record = (string: SeededString, more: Partial<ReadingInput> = {}, actor = technician) =>
   asActor(actor, (tx) => recordReading(tx, actor, string.site, input(string, more), now));
-async function failure(work: Promise<unknown>): Promise<AppError> {
-  const error = await work.then(
-    () => undefined,
-    (e: unknown) => e,
-  );
-  if (error instanceof AppError) return error;
-  throw new Error('it should have been refused', { cause: error });
-}
 
 describe('a meter reading', () => {
   it('of a monitored string at full voltage before the roll call is as expected, and does not obey', async () => {

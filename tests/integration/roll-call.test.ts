@@ -13,6 +13,7 @@ import { startRollCall } from '../../src/server/services/start-roll-call';
 import { stopRollCall } from '../../src/server/services/stop-roll-call';
 import { testDatabase, type TestDatabase } from '../support/database';
 import { testFleet, type TestFleet } from '../support/fleet';
+import { failure } from '../support/refusal';
 
 const HALL = 'Old Tannery Market Hall';
 const GALLERY = 'Coopers Wharf Gallery';
@@ -44,14 +45,6 @@ const stop = (actor: Actor, site: string) =>
   asActor(actor, (tx) => stopRollCall(tx, actor, fleet.site(site).ref, '127.0.0.1'));
 const read = (actor: Actor, site: string, at = new Date()) =>
   asActor(actor, (tx) => rollCallPage(tx, fleet.site(site).ref, at));
-async function failure(work: Promise<unknown>): Promise<AppError> {
-  const error = await work.then(
-    () => undefined,
-    (e: unknown) => e,
-  );
-  if (error instanceof AppError) return error;
-  throw new Error('it should have been refused', { cause: error });
-}
 /** What the logger would have brought: first answers of the given serials, a minute apart. */
 async function hear(site: string, serials: string[], startedAt: Date, unknown: string[] = []): Promise<void> {
   const seeded = fleet.site(site);

@@ -1,9 +1,9 @@
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { hashPassword } from '../../src/server/auth/password';
 import { actorOfCookie, endSession, signedInBy } from '../../src/server/auth/sessions';
-import { AppError } from '../../src/server/errors';
 import { signIn } from '../../src/server/services/sign-in';
 import { testDatabase, type TestDatabase } from '../support/database';
+import { failure } from '../support/refusal';
 
 const PASSWORD = 'a long enough sentence';
 let db: TestDatabase;
@@ -30,15 +30,6 @@ afterAll(() => db.drop());
 
 const attempt = (email: string, password = PASSWORD, address = '127.0.0.1', keep = false) =>
   signIn({ email, password, keep, address, agent: null }, new Date());
-const failure = async (work: Promise<unknown>): Promise<AppError> => {
-  try {
-    await work;
-  } catch (error) {
-    if (error instanceof AppError) return error;
-    throw error;
-  }
-  throw new Error('it should have been refused');
-};
 const cookieOf = (setCookie: string) => setCookie.split(';')[0] ?? '';
 
 describe('signing in', () => {
