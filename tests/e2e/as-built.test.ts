@@ -2,10 +2,10 @@ import type { Browser, BrowserContext, Page } from 'playwright-core';
 import { WebSocket } from 'ws';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { buildSite, changeUnits, meetAtOnePlane, type Journey } from '../support/as-built-journey';
-import { axeFaults } from '../support/axe';
-import { hydrated, settled, startBrowser } from '../support/browser';
+import { faultsShown } from '../support/axe';
+import { hydrated, signedInContext, startBrowser } from '../support/browser';
 import { testDatabase, type TestDatabase } from '../support/database';
-import { PASSWORD, testFleet } from '../support/fleet';
+import { testFleet } from '../support/fleet';
 import { startSite, type RunningSite } from '../support/server';
 
 /** A site by forms, from its name to a serial in every slot; then units change places, and two people meet at one part. */
@@ -26,23 +26,15 @@ afterAll(async () => {
   await db.drop();
 });
 
-async function signedIn(
+function signedIn(
   who: 'technician' | 'manager',
   width: number,
   theme: 'light' | 'dark',
 ): Promise<BrowserContext> {
-  const context = await browser.newContext({
+  return signedInContext(browser, site.url, who, {
     viewport: { width, height: width < 500 ? 844 : 1000 },
     colorScheme: theme,
   });
-  const page = await context.newPage();
-  await page.goto(`${site.url}/sign-in`);
-  await page.getByLabel('E-mail').fill(`${who}@lowfield.example`);
-  await page.getByLabel('Password').fill(PASSWORD);
-  await page.getByRole('button', { name: 'Sign in' }).click();
-  await page.waitForURL((url) => !url.pathname.startsWith('/sign-in'));
-  await page.close();
-  return context;
 }
 
 /** The first message that a logger gets for its hello. */
@@ -87,10 +79,7 @@ describe.each([
     loggerSerial: `LG-${tag}`,
     serials: tag,
     look: async (shown, what) => {
-      await settled(shown);
-      const wide = await shown.evaluate(() => document.documentElement.scrollWidth);
-      if (wide > width) faults.push(`${what}: ${wide} px wide`);
-      faults.push(...(await axeFaults(shown)).map((f) => `${what}: ${f}`));
+      faults.push(...(await faultsShown(shown, what, width)));
     },
   });
 

@@ -2,8 +2,8 @@ import knexFactory from 'knex';
 import type { Browser, BrowserContext, Page } from 'playwright-core';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { seedCommissioningRecords } from '../../seeds/records/commissioning';
-import { axeFaults } from '../support/axe';
-import { settled, startBrowser } from '../support/browser';
+import { faultsShown } from '../support/axe';
+import { signedInContext, startBrowser } from '../support/browser';
 import {
   meetAtOneCheck,
   openChecks,
@@ -13,7 +13,7 @@ import {
   type Journey,
 } from '../support/checks-journey';
 import { testDatabase, type TestDatabase } from '../support/database';
-import { PASSWORD, testFleet, type TestFleet } from '../support/fleet';
+import { testFleet, type TestFleet } from '../support/fleet';
 import { startSite, type RunningSite } from '../support/server';
 
 /** Install checks and meter readings at the desk, on what a technician has recorded on the roof so far. */
@@ -48,16 +48,8 @@ afterAll(async () => {
   await db.drop();
 });
 
-async function signedIn(who: string, width: number, theme: 'light' | 'dark'): Promise<BrowserContext> {
-  const context = await browser.newContext({ viewport: { width, height: 900 }, colorScheme: theme });
-  const page = await context.newPage();
-  await page.goto(`${site.url}/sign-in`);
-  await page.getByLabel('E-mail').fill(`${who}@lowfield.example`);
-  await page.getByLabel('Password').fill(PASSWORD);
-  await page.getByRole('button', { name: 'Sign in' }).click();
-  await page.waitForURL((url) => !url.pathname.startsWith('/sign-in'));
-  await page.close();
-  return context;
+function signedIn(who: string, width: number, theme: 'light' | 'dark'): Promise<BrowserContext> {
+  return signedInContext(browser, site.url, who, { viewport: { width, height: 900 }, colorScheme: theme });
 }
 
 describe.each([
@@ -73,10 +65,7 @@ describe.each([
     url: site.url,
     site: fleet.site(HALL).ref,
     look: async (shown, what) => {
-      await settled(shown);
-      const wide = await shown.evaluate(() => document.documentElement.scrollWidth);
-      if (wide > width) faults.push(`${what}: ${wide} px wide`);
-      faults.push(...(await axeFaults(shown)).map((f) => `${what}: ${f}`));
+      faults.push(...(await faultsShown(shown, what, width)));
     },
   });
   beforeAll(async () => {

@@ -1,10 +1,11 @@
 import type { Browser, BrowserContext, Page } from 'playwright-core';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import type { Role } from '../../src/domain/access/permissions';
-import { startSimulator, type Simulator } from '../../simulator/engine';
-import { startBrowser } from '../support/browser';
+import type { Simulator } from '../../simulator/engine';
+import { signedInContext, startBrowser } from '../support/browser';
 import { testDatabase, type TestDatabase } from '../support/database';
-import { PASSWORD, SECRET, testFleet, type TestFleet } from '../support/fleet';
+import { testFleet, type TestFleet } from '../support/fleet';
+import { startPlant } from '../support/plant';
 import { startSite, type RunningSite } from '../support/server';
 
 /**
@@ -31,13 +32,7 @@ beforeAll(async () => {
   db = await testDatabase();
   fleet = await testFleet(db, [HALL, CLINIC]);
   site = await startSite(db);
-  plant = await startSimulator({
-    plan: fleet.plan,
-    ingestUrl: `${site.url.replace('http', 'ws')}/ingest/v1`,
-    secret: SECRET,
-    port: 0,
-    pace: PACE,
-  });
+  plant = await startPlant(fleet.plan, site, PACE);
   browser = await startBrowser();
 });
 afterAll(async () => {
@@ -48,16 +43,8 @@ afterAll(async () => {
 });
 
 /** Signs in as a person does, on the page. */
-async function signedIn(role: Role): Promise<BrowserContext> {
-  const context = await browser.newContext({ viewport: { width: 1440, height: 1000 } });
-  const page = await context.newPage();
-  await page.goto(`${site.url}/sign-in`);
-  await page.getByLabel('E-mail').fill(`${role}@lowfield.example`);
-  await page.getByLabel('Password').fill(PASSWORD);
-  await page.getByRole('button', { name: 'Sign in' }).click();
-  await page.waitForURL((url) => !url.pathname.startsWith('/sign-in'));
-  await page.close();
-  return context;
+function signedIn(role: Role): Promise<BrowserContext> {
+  return signedInContext(browser, site.url, role, { viewport: { width: 1440, height: 1000 } });
 }
 const plain = (text: string): string => text.replace(/\u00a0/g, ' ');
 const heading = async (page: Page): Promise<string> => plain(await page.locator('h1').innerText());

@@ -4,8 +4,9 @@ import type { Role } from '../../src/domain/access/permissions';
 import { axeFaults } from '../support/axe';
 import { hydrated, settled, startBrowser } from '../support/browser';
 import { testDatabase, type TestDatabase } from '../support/database';
-import { PASSWORD, testFleet, type TestFleet } from '../support/fleet';
-import { signInAt, startSite, type RunningSite } from '../support/server';
+import { testFleet, type TestFleet } from '../support/fleet';
+import { signOnTo } from '../support/phone';
+import { startSite, type RunningSite } from '../support/server';
 
 /**
  * A technician on a phone enters a module from its datasheet, imports connectors from a file with faults, and archives;
@@ -30,10 +31,7 @@ beforeAll(async () => {
       viewport: role === 'technician' ? { width: 390, height: 844 } : { width: 1440, height: 900 },
       reducedMotion: 'reduce',
     });
-    const [name = '', value = ''] = (await signInAt(site.url, `${role}@lowfield.example`, PASSWORD)).split(
-      '=',
-    );
-    await context.addCookies([{ name, value, url: site.url }]);
+    await signOnTo(context, site.url, role);
     contexts.set(role, context);
   }
 });

@@ -2,8 +2,9 @@ import type { Browser, Page } from 'playwright-core';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { hydrated, startBrowser } from '../support/browser';
 import { testDatabase, type TestDatabase } from '../support/database';
-import { PASSWORD, testFleet, type TestFleet } from '../support/fleet';
-import { signInAt, startSite, type RunningSite } from '../support/server';
+import { testFleet, type TestFleet } from '../support/fleet';
+import { signOnTo } from '../support/phone';
+import { startSite, type RunningSite } from '../support/server';
 import { command, stand } from '../support/standing';
 
 /** An analyst at the fleet: filters in the address, keys, search, a hazard taken on, what a site has to tell. */
@@ -36,8 +37,7 @@ beforeAll(async () => {
   site = await startSite(db, { WAKELINE_ROLES: 'web' });
   browser = await startBrowser();
   const context = await browser.newContext({ viewport: { width: 1440, height: 1000 } });
-  const [name = '', value = ''] = (await signInAt(site.url, 'analyst@lowfield.example', PASSWORD)).split('=');
-  await context.addCookies([{ name, value, url: site.url }]);
+  await signOnTo(context, site.url, 'analyst');
   page = await context.newPage();
   page.on('console', (m) => m.type() === 'error' && noise.push(m.text()));
   page.on('pageerror', (e) => noise.push(e.message));

@@ -305,7 +305,7 @@ describe('the roof', () => {
     await settled(page);
     const box = await roof.boundingBox();
     await roof.tap({ position: { x: (box?.width ?? 0) * 0.3, y: (box?.height ?? 0) * 0.3 } });
-    await eventually(() => page.getByLabel('First module x').inputValue()).not.toBe('');
+    await eventually(() => page.getByLabel('First module, east').inputValue()).not.toBe('');
     await page.getByLabel('Modules in a row').fill('3');
     await page.getByLabel('Strings alike').fill('2');
     await page.getByRole('button', { name: 'Lay 2 strings' }).tap();

@@ -3,8 +3,9 @@ import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { axeFaults } from '../support/axe';
 import { hydrated, startBrowser } from '../support/browser';
 import { testDatabase, type TestDatabase } from '../support/database';
-import { PASSWORD, testFleet } from '../support/fleet';
-import { signInAt, startSite, type RunningSite } from '../support/server';
+import { testFleet } from '../support/fleet';
+import { phoneOf } from '../support/phone';
+import { startSite, type RunningSite } from '../support/server';
 
 /** On a roof with a phone: 14 shutdown-only units, keep-alive off, bright, and a meter that says 7.8 V. */
 let db: TestDatabase;
@@ -23,18 +24,8 @@ afterAll(async () => {
   await db.drop();
 });
 
-async function phone(role: string, more: Parameters<Browser['newContext']>[0] = {}): Promise<BrowserContext> {
-  const context = await browser.newContext({
-    viewport: { width: 390, height: 844 },
-    hasTouch: true,
-    isMobile: true,
-    reducedMotion: 'reduce',
-    ...more,
-  });
-  const [name = '', value = ''] = (await signInAt(site.url, `${role}@lowfield.example`, PASSWORD)).split('=');
-  await context.addCookies([{ name, value, url: site.url }]);
-  return context;
-}
+const phone = (role: string, more: Parameters<Browser['newContext']>[0] = {}): Promise<BrowserContext> =>
+  phoneOf(browser, site.url, role, more);
 const answer = (page: Page): Promise<string> =>
   page
     .locator('#answer')

@@ -1,10 +1,11 @@
 import type { Browser, BrowserContext, Page } from 'playwright-core';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
-import { startSimulator, type Simulator } from '../../simulator/engine';
+import type { Simulator } from '../../simulator/engine';
 import { axeFaults } from '../support/axe';
-import { hydrated, startBrowser } from '../support/browser';
+import { hydrated, signedInContext, startBrowser } from '../support/browser';
 import { testDatabase, type TestDatabase } from '../support/database';
-import { PASSWORD, SECRET, testFleet, type TestFleet } from '../support/fleet';
+import { testFleet, type TestFleet } from '../support/fleet';
+import { startPlant } from '../support/plant';
 import { startSite, type RunningSite } from '../support/server';
 
 /**
@@ -27,13 +28,7 @@ beforeAll(async () => {
   db = await testDatabase();
   fleet = await testFleet(db, [HALL]);
   site = await startSite(db);
-  plant = await startSimulator({
-    plan: fleet.plan,
-    ingestUrl: `${site.url.replace('http', 'ws')}/ingest/v1`,
-    secret: SECRET,
-    port: 0,
-    pace: PACE,
-  });
+  plant = await startPlant(fleet.plan, site, PACE);
   browser = await startBrowser();
 });
 afterAll(async () => {
@@ -43,20 +38,12 @@ afterAll(async () => {
   await db.drop();
 });
 
-async function signedIn(script: boolean): Promise<BrowserContext> {
-  const context = await browser.newContext({
+function signedIn(script: boolean): Promise<BrowserContext> {
+  return signedInContext(browser, site.url, 'technician', {
     viewport: { width: 390, height: 844 },
     javaScriptEnabled: script,
     reducedMotion: 'reduce',
   });
-  const page = await context.newPage();
-  await page.goto(`${site.url}/sign-in`);
-  await page.getByLabel('E-mail').fill('technician@lowfield.example');
-  await page.getByLabel('Password').fill(PASSWORD);
-  await page.getByRole('button', { name: 'Sign in' }).click();
-  await page.waitForURL((url) => !url.pathname.startsWith('/sign-in'));
-  await page.close();
-  return context;
 }
 const at = (page: string): string => `${site.url}/commissioning/${fleet.site(HALL).ref}/${page}`;
 const plain = (text: string): string => text.replace(/\u00a0/g, ' ').replace(/\u2011/g, '-');

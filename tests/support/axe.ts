@@ -1,6 +1,7 @@
 import { createRequire } from 'node:module';
 import type { AxeResults } from 'axe-core';
 import type { Page } from 'playwright-core';
+import { settled } from './browser';
 
 const AXE = createRequire(import.meta.url).resolve('axe-core/axe.min.js');
 const TAGS = ['wcag2a', 'wcag2aa', 'wcag21a', 'wcag21aa', 'wcag22aa', 'best-practice'];
@@ -20,4 +21,14 @@ export async function axeFaults(page: Page): Promise<string[]> {
       (n) => `${v.id}: ${n.target.join(' ')} (${n.failureSummary?.split('\n')[1]?.trim() ?? v.help})`,
     ),
   );
+}
+
+/** What is wrong with a page as it stands on a screen `width` px wide: axe's faults, and a page wider than its screen. */
+export async function faultsShown(page: Page, what: string, width: number): Promise<string[]> {
+  await settled(page);
+  const wide = await page.evaluate(() => document.documentElement.scrollWidth);
+  return [
+    ...(wide > width ? [`${what}: ${wide} px wide`] : []),
+    ...(await axeFaults(page)).map((fault) => `${what}: ${fault}`),
+  ];
 }

@@ -1,4 +1,11 @@
-import { chromium, type Browser, type Page } from 'playwright-core';
+import {
+  chromium,
+  type Browser,
+  type BrowserContext,
+  type BrowserContextOptions,
+  type Page,
+} from 'playwright-core';
+import { PASSWORD } from './fleet';
 
 const FLAGS = [
   '--no-sandbox',
@@ -36,3 +43,26 @@ export const settled = (page: Page): Promise<unknown> =>
     for (let frames = 0; frames < 3; frames++) await new Promise((drawn) => requestAnimationFrame(drawn));
     await Promise.all(document.getAnimations().map((a) => a.finished.catch(() => undefined)));
   });
+
+/** Signs in as a person does, on the page; `who` is the name before the @ of the test fleet. */
+export async function signInOn(page: Page, url: string, who: string): Promise<void> {
+  await page.goto(`${url}/sign-in`);
+  await page.getByLabel('E-mail').fill(`${who}@lowfield.example`);
+  await page.getByLabel('Password').fill(PASSWORD);
+  await page.getByRole('button', { name: 'Sign in' }).click();
+  await page.waitForURL((shown) => !shown.pathname.startsWith('/sign-in'));
+}
+
+/** A browser's window of its own in which somebody has signed in. The caller closes it. */
+export async function signedInContext(
+  browser: Browser,
+  url: string,
+  who: string,
+  options: BrowserContextOptions,
+): Promise<BrowserContext> {
+  const context = await browser.newContext(options);
+  const page = await context.newPage();
+  await signInOn(page, url, who);
+  await page.close();
+  return context;
+}

@@ -20,7 +20,7 @@ export async function phoneOf(
   return context;
 }
 
-/** Puts another session into the phone, as a sign-in would. */
+/** Puts somebody’s session into a phone or another browser, as a sign-in would. */
 export async function signOnTo(context: BrowserContext, url: string, who: string): Promise<void> {
   const [name = '', value = ''] = (await signInAt(url, `${who}@lowfield.example`, PASSWORD)).split('=');
   await context.clearCookies();
