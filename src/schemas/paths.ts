@@ -132,6 +132,7 @@ export const paths = {
     accountSecondFactor: () => '/api/account/second-factor',
     shareLinks: (site: string) => `/api/sites/${site}/share-links`,
     shareLink: (link: string) => `/api/share-links/${link}`,
+    shared: (token: string) => `/api/shared/${token}`,
     auditCsv: () => '/api/audit.csv',
     /** A paper of a site: handover pack, test report. */
     paper: (paper: string) => `/api/papers/${paper}`,

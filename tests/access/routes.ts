@@ -5,6 +5,7 @@ import { DESIGN_AND_EQUIPMENT } from './routes-equipment';
 import { IMPORT_SERIALS_ROOF } from './routes-import';
 import { HANDOVER } from './routes-handover';
 import { PEOPLE_AND_ACCOUNTS } from './routes-people';
+import { SHARED_PAGES } from './routes-share';
 
 export type { Route, Target } from './route';
 
@@ -15,6 +16,7 @@ export const ROUTES: readonly Route[] = [
   ...IMPORT_SERIALS_ROOF,
   ...HANDOVER,
   ...PEOPLE_AND_ACCOUNTS,
+  ...SHARED_PAGES,
   // pages
   get('index.astro', 'fleet.read', 'nothing', () => '/'),
   get('shutdown.astro', 'shutdown.read', 'nothing', () => '/shutdown'),

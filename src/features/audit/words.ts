@@ -3,6 +3,7 @@ import type { AUDIT_AREAS, AuditItem } from '../../schemas/api/audit';
 export const AREA_WORDS: Record<(typeof AUDIT_AREAS)[number], string> = {
   people: 'people',
   account: 'own accounts',
+  share: 'shared pages',
   as_built: 'as-built',
   equipment: 'equipment',
   checks: 'install checks',
@@ -27,6 +28,8 @@ const ACTIONS: Record<string, string> = {
   'account.sessions_ended': 'signed other devices out',
   'account.second_factor_begun': 'put a second factor in force',
   'account.second_factor_ended': 'ended their second factor',
+  'share.made': 'made a shared page',
+  'share.ended': 'ended a shared page',
   'as_built.site_added': 'began a site',
   'as_built.site_changed': 'changed a site',
   'as_built.string_added': 'added a string',

@@ -1,6 +1,7 @@
 import { counted, energy, percent } from '../../drawings/numbers';
 import { longDate } from '../../drawings/times';
 import type { CustomerSite } from '../../schemas/api/customer';
+import type { SharedSite } from '../../schemas/api/share';
 
 /** Words of the cards under the day's curve: month, life, working time, last shutdown test, who looks after it. */
 
@@ -43,6 +44,17 @@ export function lifeCard(life: CustomerSite['life']): Card {
     label,
     figure: energy(life.energy),
     note: `${dayWords(life.from)}; counted from ${dayWords(life.countedFrom)}`,
+  };
+}
+
+/** This calendar year so far; where the roof was switched on in it, since then. */
+export function yearCard(year: SharedSite['year'], life: CustomerSite['life']): Card {
+  if (!year || !life) return { label: 'This year', figure: '–', note: 'not switched on yet' };
+  const since = life.countedFrom ?? life.from;
+  return {
+    label: year.first.slice(0, 4),
+    figure: energy(year.energy),
+    note: since > year.first ? `since ${dayWords(since)}` : 'since the first of January',
   };
 }
 

@@ -1,6 +1,7 @@
 import { counted, energy, number, percent, power } from '../../drawings/numbers';
 import { clockOrDate } from '../../drawings/times';
-import type { CustomerNow, CustomerSite } from '../../schemas/api/customer';
+import type { CustomerSite } from '../../schemas/api/customer';
+import type { SharedNow } from '../../schemas/api/share';
 
 /**
  * Sentences for the owner of a roof, who is not of the trade. Each is built from what is known and says nothing
@@ -14,6 +15,8 @@ export interface CustomerWords {
   /** Nothing here needs anybody. */
   calm: boolean;
 }
+/** Whom the sentences speak to: the owner of the roof, or whoever passes a shared page. */
+export type Reader = 'owner' | 'anybody';
 type Today = Pick<CustomerSite['today'], 'energy' | 'clearEnergySoFar'>;
 
 /** Below this share of a clear day's energy so far there is no fair comparison yet, Wh. */
@@ -27,16 +30,16 @@ const LIVE_IN_LIGHT =
 const is = (n: number): string => (n === 1 ? 'is' : 'are');
 const has = (n: number): string => (n === 1 ? 'has' : 'have');
 
-export const isStale = (now: CustomerNow): boolean => now.loggers === 0 || now.quietLoggers >= now.loggers;
+export const isStale = (now: SharedNow): boolean => now.loggers === 0 || now.quietLoggers >= now.loggers;
 
-function refusesToShutDown(now: CustomerNow): string {
+function refusesToShutDown(now: SharedNow): string {
   if (now.notShuttingDown > 0)
     return `${number(now.notShuttingDown)} of ${counted(now.modules, 'module')} ${has(now.notShuttingDown)} not shut down`;
   return 'part of it has not shut down';
 }
 
 /** What is known of the modules one by one, for a roof that works. Of those that are silent nothing is claimed. */
-function modulesWords(now: CustomerNow): string {
+function modulesWords(now: SharedNow): string {
   if (now.reporting === 0) return '';
   const heard = now.reporting - now.silent - now.unheard;
   if (heard <= 0) return 'Its modules do not report just now.';
@@ -48,48 +51,53 @@ function modulesWords(now: CustomerNow): string {
     : `All ${number(heard)} modules${which} are passing power.`;
 }
 
-function outputWords(now: CustomerNow): string {
-  if (now.power === null) return 'What your roof is making is not known just now.';
-  if (now.power < NOTHING_BELOW_W) return 'Your roof is making no power just now.';
-  return `Your roof is making ${power(now.power)}.`;
+const roofOf = (reader: Reader): string => (reader === 'owner' ? 'your roof' : 'this roof');
+const RoofOf = (reader: Reader): string => (reader === 'owner' ? 'Your roof' : 'This roof');
+
+function outputWords(now: SharedNow, reader: Reader): string {
+  if (now.power === null) return `What ${roofOf(reader)} is making is not known just now.`;
+  if (now.power < NOTHING_BELOW_W) return `${RoofOf(reader)} is making no power just now.`;
+  return `${RoofOf(reader)} is making ${power(now.power)}.`;
 }
 
-function shutdownCause(now: CustomerNow): string {
+function shutdownCause(now: SharedNow): string {
   const causes = new Set(now.commands.map((c) => c.inForce));
   if (causes.has('initiator')) return 'A shutdown switch was operated.';
   if (causes.has('power_lost')) return 'The power that it needs to be released was lost.';
   return 'The signal that lets it work was lost.';
 }
 
-function heading(now: CustomerNow, timeZone: string): string {
+function heading(now: SharedNow, timeZone: string, reader: Reader): string {
+  const roof = roofOf(reader);
+  const Roof = RoofOf(reader);
   const when = (at: string) => clockOrDate(at, now.at, timeZone);
   if (now.notShuttingDown > 0 || now.stringsNotShuttingDown > 0)
-    return `Treat your roof as live: ${refusesToShutDown(now)}.`;
+    return `Treat ${roof} as live: ${refusesToShutDown(now)}.`;
   if (isStale(now))
     return now.lastSpokeAt
-      ? `We have heard nothing from your roof since ${when(now.lastSpokeAt)}.`
-      : 'No readings have come from your roof yet.';
+      ? `We have heard nothing from ${roof} since ${when(now.lastSpokeAt)}.`
+      : `No readings have come from ${roof} yet.`;
   if (now.stage === 'commissioning') {
     const answered = now.reporting - now.unheard;
     return now.reporting > 0
-      ? `Your roof is being put into service: ${number(answered)} of ${counted(now.reporting, 'module')} ${has(answered)} answered so far.`
-      : 'Your roof is being put into service.';
+      ? `${Roof} is being put into service: ${number(answered)} of ${counted(now.reporting, 'module')} ${has(answered)} answered so far.`
+      : `${Roof} is being put into service.`;
   }
-  if (now.inShutdownSince) return `Your roof has been shut down since ${when(now.inShutdownSince)}.`;
+  if (now.inShutdownSince) return `${Roof} has been shut down since ${when(now.inShutdownSince)}.`;
   const { total, gridLost } = now.inverters;
-  if (total > 0 && gridLost === total) return 'The grid is gone at your roof, so it makes no power.';
+  if (total > 0 && gridLost === total) return `The grid is gone at ${roof}, so it makes no power.`;
   if (now.commands.length > 0) {
     const since = now.commands.map((c) => c.since).sort()[0] ?? now.at;
-    return `${outputWords(now)} Part of it has been shut down since ${when(since)}.`;
+    return `${outputWords(now, reader)} Part of it has been shut down since ${when(since)}.`;
   }
-  if (!now.daylight) return 'It is night at your roof: it rests until the sun is up.';
+  if (!now.daylight) return `It is night at ${roof}: it rests until the sun is up.`;
   if (now.reporting > 0 && now.dark === now.reporting)
-    return 'Too little light reaches your modules: your roof is waiting.';
-  return `${outputWords(now)} ${modulesWords(now)}`.trim();
+    return `Too little light reaches ${reader === 'owner' ? 'your' : 'the'} modules: ${roof} is waiting.`;
+  return `${outputWords(now, reader)} ${modulesWords(now)}`.trim();
 }
 
 /** What stands out beside the heading, most serious first. */
-function exceptions(now: CustomerNow): string[] {
+function exceptions(now: SharedNow, reader: Reader): string[] {
   const said: string[] = [];
   const held = now.inShutdownSince !== null || now.commands.length > 0;
   if (now.unconfirmed > 0 && held)
@@ -130,12 +138,12 @@ function exceptions(now: CustomerNow): string[] {
     );
   if (now.quietLoggers > 0 && !isStale(now))
     said.push(
-      'Part of your roof has not reported for a while; these figures leave it out or show its last word.',
+      `Part of ${roofOf(reader)} has not reported for a while; these figures leave it out or show its last word.`,
     );
   return said;
 }
 
-function todayWords(now: CustomerNow, today: Today): string {
+function todayWords(now: SharedNow, today: Today): string {
   if (today.energy === null) return '';
   const made = now.daylight
     ? `Today so far ${energy(today.energy)}`
@@ -145,7 +153,7 @@ function todayWords(now: CustomerNow, today: Today): string {
 }
 
 /** Whether anything but a quiet working or resting roof is there to tell. */
-function isCalm(now: CustomerNow): boolean {
+function isCalm(now: SharedNow): boolean {
   const troubled =
     now.stuck +
     now.silent +
@@ -166,7 +174,7 @@ function isCalm(now: CustomerNow): boolean {
   );
 }
 
-function cautionOf(now: CustomerNow): CustomerWords['caution'] {
+function cautionOf(now: SharedNow): CustomerWords['caution'] {
   if (now.notShuttingDown > 0 || now.stringsNotShuttingDown > 0)
     return {
       strong: 'Do not rely on the shutdown.',
@@ -182,17 +190,19 @@ function cautionOf(now: CustomerNow): CustomerWords['caution'] {
   return null;
 }
 
-/** The head of the page: heading, sentences, caution. */
+/** The head of the page: heading, sentences, caution. Who merely passes is neither called upon nor told to call. */
 export function customerWords(
-  now: CustomerNow,
+  now: SharedNow,
   today: Today,
   timeZone: string,
   care: { organisation: string },
+  reader: Reader = 'owner',
 ): CustomerWords {
   const calm = isCalm(now);
   const grave = now.notShuttingDown > 0 || now.stringsNotShuttingDown > 0;
   const sentences: string[] = [];
-  if (grave) sentences.push(`Call ${care.organisation} now if they have not called you.`);
+  if (grave && reader === 'owner')
+    sentences.push(`Call ${care.organisation} now if they have not called you.`);
   if (isStale(now)) {
     sentences.push(
       now.lastSpokeAt
@@ -200,18 +210,21 @@ export function customerWords(
         : 'This page cannot tell what it is doing until the connection to it is made.',
     );
     if (now.commands.length > 0) sentences.push('When last heard, it was shut down, wholly or in part.');
-    return { heading: heading(now, timeZone), sentences, caution: cautionOf(now), calm: false };
+    return { heading: heading(now, timeZone, reader), sentences, caution: cautionOf(now), calm: false };
   }
   if (now.inShutdownSince || now.commands.length > 0) sentences.push(shutdownCause(now));
-  sentences.push(...exceptions(now));
+  sentences.push(...exceptions(now, reader));
   if (now.stage === 'operating' && !grave) {
     const madeToday = todayWords(now, today);
     if (madeToday) sentences.unshift(madeToday);
   }
-  if (calm) sentences.push('Nothing needs your attention.');
-  else if (!grave && now.stage === 'operating')
+  if (calm) {
+    if (reader === 'owner') sentences.push('Nothing needs your attention.');
+  } else if (!grave && now.stage === 'operating')
     sentences.push(
-      `${care.organisation} has this on its screens; there is nothing for you to do on the roof.`,
+      reader === 'owner'
+        ? `${care.organisation} has this on its screens; there is nothing for you to do on the roof.`
+        : `${care.organisation} has this on its screens.`,
     );
-  return { heading: heading(now, timeZone), sentences, caution: cautionOf(now), calm };
+  return { heading: heading(now, timeZone, reader), sentences, caution: cautionOf(now), calm };
 }

@@ -6,6 +6,7 @@ import { z } from 'zod';
 export const AUDIT_AREAS = [
   'people',
   'account',
+  'share',
   'as_built',
   'equipment',
   'checks',

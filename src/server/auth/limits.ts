@@ -85,6 +85,11 @@ export async function takeLetterTry(email: string, address: string): Promise<voi
 export const takeTokenTry = (address: string): Promise<void> =>
   take(letterLimits().token, address, 'use a link');
 
+let sharing: RateLimiterPostgres | undefined;
+/** Reads of one shared page from one address: 600 in 15 minutes, some twenty screens behind one connection. */
+export const takeSharedRead = (link: number, address: string): Promise<void> =>
+  take((sharing ??= limiter('shared', 600, 900)), `${link} ${address}`, 'read this page');
+
 /** Counts a one-time code that somebody tries; a right one clears the count. */
 export const takeCodeTry = (personId: number): Promise<void> =>
   take(letterLimits().code, String(personId), 'use a code');

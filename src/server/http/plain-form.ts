@@ -35,18 +35,22 @@ export async function plainForm<B extends z.ZodType, R>(
   return outcome;
 }
 
+export const SECRET_HEADERS = { 'referrer-policy': 'no-referrer', 'x-robots-tag': 'noindex' } as const;
+
 /** A page whose address is a secret: it is never told to others, kept or indexed. @throws nothing */
 export function secretPage(astro: AstroGlobal): void {
-  astro.response.headers.set('referrer-policy', 'no-referrer');
-  astro.response.headers.set('x-robots-tag', 'noindex');
+  for (const [name, value] of Object.entries(SECRET_HEADERS)) astro.response.headers.set(name, value);
 }
 
 /** What a link leads to, or why it can't be used. */
-export async function behindLink<T>(work: () => Promise<T>): Promise<{ found: T | null; why: string }> {
+export async function behindLink<T>(
+  work: () => Promise<T>,
+): Promise<{ found: T | null; why: string; status: number }> {
   try {
-    return { found: await work(), why: '' };
+    return { found: await work(), why: '', status: 200 };
   } catch (error) {
-    if (error instanceof AppError) return { found: null, why: error.message };
+    if (error instanceof AppError)
+      return { found: null, why: error.message, status: ERROR_KINDS[error.kind].status };
     throw error;
   }
 }

@@ -1,0 +1,117 @@
+import { useState } from 'react';
+import { Button, ButtonLink } from '../../components/ui/Button';
+import { Field } from '../../components/ui/Field';
+import type { ApiError } from '../../lib/api';
+import type { MadeShareLink, ShareLinkBody } from '../../schemas/api/share';
+
+interface Props {
+  busy: boolean;
+  fault: ApiError | null;
+  made: MadeShareLink | null;
+  onSubmit: (body: ShareLinkBody) => void;
+  onClose: () => void;
+}
+const FORMS = [
+  { kiosk: false, words: 'An ordinary page, for people with a phone or a computer' },
+  { kiosk: true, words: 'A lobby screen: large, nothing to touch, dark at night' },
+] as const;
+
+/** What is shared and until when; afterwards the link, this once. */
+export function ShareForm({ busy, fault, made, onSubmit, onClose }: Props) {
+  const [typed, setTyped] = useState<{ label: string; kiosk: boolean; endsOn: string }>({
+    label: '',
+    kiosk: false,
+    endsOn: '',
+  });
+  const [copied, setCopied] = useState<'yes' | 'no' | null>(null);
+  if (made) {
+    const copy = () =>
+      navigator.clipboard.writeText(made.address).then(
+        () => setCopied('yes'),
+        () => setCopied('no'),
+      );
+    return (
+      <>
+        <Field
+          label={`Link of “${made.link.label}”`}
+          readOnly
+          value={made.address}
+          onFocus={(event) => event.target.select()}
+          hint="Keep it now: only a fingerprint of it is stored. Whoever has it sees the page until it ends."
+        />
+        <p role="status" className="mt-2 min-h-[20px] text-sm text-ink-2">
+          {copied === 'yes' && 'Copied.'}
+          {copied === 'no' && 'It could not be copied: select it above and copy it by hand.'}
+        </p>
+        <div className="mt-2 flex flex-wrap gap-2">
+          {typeof navigator !== 'undefined' && 'clipboard' in navigator && (
+            <Button weight="primary" onClick={() => void copy()}>
+              Copy the link
+            </Button>
+          )}
+          <ButtonLink href={made.address} target="_blank" rel="noopener noreferrer">
+            Open it
+          </ButtonLink>
+          <Button onClick={onClose}>Done</Button>
+        </div>
+      </>
+    );
+  }
+  const faultOf = (field: string) => fault?.fault(field) ?? null;
+  const elsewhere = fault && !faultOf('label') && !faultOf('endsOn');
+  return (
+    <form
+      className="grid gap-4"
+      noValidate
+      onSubmit={(event) => {
+        event.preventDefault();
+        onSubmit({ label: typed.label, kiosk: typed.kiosk, endsOn: typed.endsOn || null });
+      }}
+    >
+      {elsewhere && (
+        <p role="alert" className="font-medium text-rust-ink">
+          {fault.message}
+        </p>
+      )}
+      <Field
+        label="Label"
+        name="label"
+        value={typed.label}
+        maxLength={80}
+        autoComplete="off"
+        hint="Where or for whom it is, for instance: Lobby."
+        error={faultOf('label')}
+        onChange={(event) => setTyped({ ...typed, label: event.target.value })}
+      />
+      <fieldset>
+        <legend className="mb-1 font-medium">Form</legend>
+        {FORMS.map(({ kiosk, words }) => (
+          <label key={words} className="target flex items-center gap-2.5">
+            <input
+              type="radio"
+              name="kiosk"
+              checked={typed.kiosk === kiosk}
+              onChange={() => setTyped({ ...typed, kiosk })}
+              className="h-5 w-5 flex-none accent-[var(--petrol)]"
+            />
+            {words}
+          </label>
+        ))}
+      </fieldset>
+      <Field
+        label="Ends on"
+        name="endsOn"
+        type="date"
+        value={typed.endsOn}
+        hint="The last day on which it works, at the site. Empty: until somebody ends it."
+        error={faultOf('endsOn')}
+        onChange={(event) => setTyped({ ...typed, endsOn: event.target.value })}
+      />
+      <div>
+        <Button type="submit" weight="primary" disabled={busy}>
+          Make the link
+        </Button>
+      </div>
+    </form>
+  );
+}
