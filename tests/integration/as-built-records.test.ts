@@ -1,6 +1,6 @@
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import type { Actor } from '../../src/domain/access/permissions';
-import type { HistoryPage, PartValues } from '../../src/schemas/api/as-built';
+import type { HistoryPage } from '../../src/schemas/api/as-built';
 import { asActor } from '../../src/server/db/transaction';
 import { asBuiltParts } from '../../src/server/queries/as-built';
 import { setSlotFacts } from '../../src/server/services/edit-as-built-strings';
@@ -22,12 +22,7 @@ let stranger: Actor;
 let operating: SeededSite;
 /** The site that the tests make. */
 let site = '';
-let forms: ReturnType<typeof siteForms>;
-const built = (at?: string) => forms.built(at);
-const add: typeof forms.add = (...args) => forms.add(...args);
-const change: typeof forms.change = (...args) => forms.change(...args);
-const remove: typeof forms.remove = (...args) => forms.remove(...args);
-const stringValues = (some?: PartValues) => forms.stringValues(some);
+const { built, add, change, remove, stringValues } = siteForms(() => ({ technician, site }));
 
 beforeAll(async () => {
   db = await testDatabase();
@@ -38,7 +33,6 @@ beforeAll(async () => {
   operating = fleet.site('Weirside Clinic');
   site = (await newSite(technician, { name: 'Ferry Sheds', shutdownSwitchPlace: 'Beside the slipway door' }))
     .data.id;
-  forms = siteForms(technician, site);
   await add('plane', { name: 'Southern roof', surfaceTilt: 12, surfaceAzimuth: 180 });
   await add('inverter', { name: 'W1', acPowerMax: 10_000, inputs: 3 });
   await add('logger', { serial: 'LG-TEST-1' });

@@ -1,7 +1,6 @@
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import type { Actor } from '../../src/domain/access/permissions';
 import { partOf } from '../../src/schemas/as-built-values';
-import type { PartValues } from '../../src/schemas/api/as-built';
 import { GET as getAsBuilt } from '../../src/pages/api/sites/[site]/as-built/index';
 import { POST as postPlacements } from '../../src/pages/api/sites/[site]/placements';
 import type { SeededSite } from '../../seeds/plant/seeded';
@@ -17,12 +16,7 @@ let stranger: Actor;
 let operating: SeededSite;
 /** The site that the tests make. */
 let site = '';
-let forms: ReturnType<typeof siteForms>;
-const built = (at?: string) => forms.built(at);
-const add: typeof forms.add = (...args) => forms.add(...args);
-const change: typeof forms.change = (...args) => forms.change(...args);
-const remove: typeof forms.remove = (...args) => forms.remove(...args);
-const stringValues = (some?: PartValues) => forms.stringValues(some);
+const { built, add, change, remove, stringValues } = siteForms(() => ({ technician, site }));
 
 beforeAll(async () => {
   db = await testDatabase();
@@ -43,7 +37,6 @@ describe('a new site', () => {
     });
     expect(made.status).toBe(200);
     site = made.data.id;
-    forms = siteForms(technician, site);
     const b = await built();
     expect(b.site).toMatchObject({
       name: 'Ferry Sheds',

@@ -3,10 +3,10 @@ import type { Actor } from '../../src/domain/access/permissions';
 import type { EquipmentFamily } from '../../src/domain/equipment/families';
 import { GET as csvRoute } from '../../src/pages/api/equipment/[family].csv';
 import { POST as importRoute } from '../../src/pages/api/equipment/[family]/import';
-import { importPreview, type CatalogueItem, type ImportPreview } from '../../src/schemas/api/equipment';
+import { importPreview, type ImportPreview } from '../../src/schemas/api/equipment';
 import { testDatabase, type TestDatabase } from '../support/database';
 import { ask } from '../support/endpoint';
-import { audited, change as changeOf, list as listOf, named as namedOf, problem } from '../support/equipment';
+import { catalogueOf, problem } from '../support/equipment';
 import { testFleet, type TestFleet } from '../support/fleet';
 
 const CLINIC = 'Weirside Clinic';
@@ -23,15 +23,7 @@ beforeAll(async () => {
 });
 afterAll(() => db.drop());
 
-const list = (family: EquipmentFamily, actor = technician) => listOf(actor, family);
-const named = (family: EquipmentFamily, name: string, actor = technician) => namedOf(actor, family, name);
-const change = (
-  family: EquipmentFamily,
-  item: CatalogueItem,
-  typed: Record<string, string>,
-  accepted: string[] = [],
-) => changeOf(technician, family, item, typed, accepted);
-const audit = (action: string) => audited(db, action);
+const { list, named, change, audit } = catalogueOf(() => ({ db, actor: technician }));
 
 describe('import', () => {
   const send = (text: string, confirm?: string, family: EquipmentFamily = 'connectors') =>

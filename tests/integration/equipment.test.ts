@@ -1,6 +1,5 @@
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import type { Actor } from '../../src/domain/access/permissions';
-import type { EquipmentFamily } from '../../src/domain/equipment/families';
 import { POST as createRoute } from '../../src/pages/api/equipment/[family]';
 import { GET as csvRoute } from '../../src/pages/api/equipment/[family].csv';
 import {
@@ -8,11 +7,11 @@ import {
   PATCH as archiveRoute,
   PUT as changeRoute,
 } from '../../src/pages/api/equipment/[family]/[type]';
-import { catalogueType, entrySaved, type CatalogueItem } from '../../src/schemas/api/equipment';
+import { catalogueType, entrySaved } from '../../src/schemas/api/equipment';
 import { typedEntry } from '../../src/schemas/equipment-entry';
 import { testDatabase, type TestDatabase } from '../support/database';
 import { ask } from '../support/endpoint';
-import { audited, change as changeOf, list as listOf, named as namedOf, problem } from '../support/equipment';
+import { catalogueOf, problem } from '../support/equipment';
 import { testFleet, type TestFleet } from '../support/fleet';
 
 const CLINIC = 'Weirside Clinic';
@@ -31,15 +30,7 @@ beforeAll(async () => {
 });
 afterAll(() => db.drop());
 
-const list = (family: EquipmentFamily, actor = technician) => listOf(actor, family);
-const named = (family: EquipmentFamily, name: string, actor = technician) => namedOf(actor, family, name);
-const change = (
-  family: EquipmentFamily,
-  item: CatalogueItem,
-  typed: Record<string, string>,
-  accepted: string[] = [],
-) => changeOf(technician, family, item, typed, accepted);
-const audit = (action: string) => audited(db, action);
+const { list, named, change, audit } = catalogueOf(() => ({ db, actor: technician }));
 
 describe('the catalogue', () => {
   it('knows how each type is used', async () => {

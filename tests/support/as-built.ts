@@ -73,10 +73,10 @@ interface More {
   actor?: Actor;
 }
 
-/** What a technician does to one site; `at` and `actor` take another. */
-export function siteForms(technician: Actor, site: string) {
-  const built = async (at = site): Promise<AsBuilt> => {
-    const { data } = await call<AsBuilt>(getAsBuilt, { actor: technician, params: { site: at } });
+/** What a technician does to one site, both asked for at each call; `at` and `actor` take another. */
+export function siteForms(of: () => { technician: Actor; site: string }) {
+  const built = async (at = of().site): Promise<AsBuilt> => {
+    const { data } = await call<AsBuilt>(getAsBuilt, { actor: of().technician, params: { site: at } });
     return asBuilt.parse(data);
   };
   return {
@@ -86,7 +86,7 @@ export function siteForms(technician: Actor, site: string) {
       values: PartValues,
       more: More = {},
     ): Promise<Reply<PartAdded>> => {
-      const { at = site, actor = technician, ...rest } = more;
+      const { at = of().site, actor = of().technician, ...rest } = more;
       return call(postPart, {
         actor,
         params: { site: at },
@@ -99,7 +99,7 @@ export function siteForms(technician: Actor, site: string) {
       part: string,
       before: PartValues,
       after: PartValues,
-      { actor = technician, reason = '', at = site } = {},
+      { actor = of().technician, reason = '', at = of().site } = {},
     ): Promise<Reply<undefined>> =>
       call(patchPart, {
         actor,
@@ -110,7 +110,7 @@ export function siteForms(technician: Actor, site: string) {
     remove: (
       kind: PartKind,
       part: string,
-      { reason = '', at = site, actor = technician } = {},
+      { reason = '', at = of().site, actor = of().technician } = {},
     ): Promise<Reply<undefined>> =>
       call(deletePart, { actor, params: { site: at, part }, method: 'DELETE', body: { kind, reason } }),
     /** A string on the site's first parts, of units that report. */

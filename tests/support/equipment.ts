@@ -47,3 +47,16 @@ export const audited = async (db: TestDatabase, action: string) =>
       [action],
     )
   ).rows;
+
+/** The same as one person does it, and the trail of it; person and database are asked for at each call. */
+export const catalogueOf = (of: () => { db: TestDatabase; actor: Actor }) => ({
+  list: (family: EquipmentFamily, actor = of().actor) => list(actor, family),
+  named: (family: EquipmentFamily, name: string, actor = of().actor) => named(actor, family, name),
+  change: (
+    family: EquipmentFamily,
+    item: CatalogueItem,
+    typed: Record<string, string>,
+    accepted: string[] = [],
+  ) => change(of().actor, family, item, typed, accepted),
+  audit: (action: string) => audited(of().db, action),
+});
