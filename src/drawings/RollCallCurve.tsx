@@ -32,7 +32,9 @@ export function RollCallCurve({
   const x = (s: number) => plot.left + (s / end) * (plot.right - plot.left);
   const peak = Math.max(1, total, heardAtS.length);
   const y = (n: number) => plot.bottom - (n / peak) * (plot.bottom - plot.top);
-  const minuteStep = ([1, 2, 5, 10, 15, 30, 60, 120, 240].find((m) => (m * 60) / end >= 0.13) ?? 480) * 60;
+  // narrow drawings give each label the same room, and so fewer of them
+  const leastStep = Math.max(0.13, 62 / (plot.right - plot.left)) * end;
+  const minuteStep = ([1, 2, 5, 10, 15, 30, 60, 120, 240].find((m) => m * 60 >= leastStep) ?? 480) * 60;
   const minutes = Array.from({ length: Math.floor(end / minuteStep) + 1 }, (_, i) => i * minuteStep);
   const levels = ticksTo(peak, 4).filter((v) => v < peak * 0.94);
 

@@ -1,3 +1,4 @@
+import { gappedLine } from './gapped-line';
 import { SCREEN, type Paint } from './paint';
 import { ticksTo } from './ticks';
 
@@ -58,15 +59,8 @@ export function TestLines({
   const top = levels.at(-1) ?? peak;
   const x = (s: number) => plot.left + ((s - FROM_S) / (endS - FROM_S)) * (plot.right - plot.left);
   const y = (v: number) => plot.bottom - (Math.max(0, v) / top) * (plot.bottom - plot.top);
-  const path = (points: TestLine['points']): string => {
-    let d = '';
-    let drawing = false;
-    for (const [s, v] of points) {
-      if (v !== null) d += `${drawing ? 'L' : 'M'}${x(s).toFixed(1)} ${y(v).toFixed(1)}`;
-      drawing = v !== null;
-    }
-    return d;
-  };
+  const path = (points: TestLine['points']): string =>
+    gappedLine(points.map(([s, v]) => [x(s), v === null ? null : y(v)]));
   const step = (width < 500 ? 2 : 1) * (endS > 240 ? 60 : endS > 150 ? 30 : 15);
   const seconds = Array.from({ length: Math.floor(endS / step) + 1 }, (_, i) => i * step);
   const colour = { live: paint.crimson, fallen: paint.plum, open: paint.petrol };
@@ -82,13 +76,10 @@ export function TestLines({
         <g key={v}>
           <path d={`M${plot.left} ${y(v)}H${plot.right}`} stroke={v === 0 ? paint.rule : paint.ruleFaint} />
           <text x={plot.left - 8} y={y(v) + 4} textAnchor="end" fill={paint.ink2} {...FONT}>
-            {v}
+            {v === top ? `${v} V` : v}
           </text>
         </g>
       ))}
-      <text x={plot.left - 8} y={plot.top - 6} textAnchor="end" fill={paint.ink2} {...FONT}>
-        V
-      </text>
       {seconds.map((s) => (
         <text key={s} x={x(s)} y={plot.bottom + 20} textAnchor="middle" fill={paint.ink2} {...FONT}>
           {s} s

@@ -229,6 +229,9 @@ export function Walk({
                   textAnchor={free(first) ? 'end' : 'start'}
                   fontSize={font}
                   fill={paint.ink}
+                  stroke={paint.sheet}
+                  strokeWidth="4"
+                  paintOrder="stroke"
                   {...TEXT}
                 >
                   {s.name} −

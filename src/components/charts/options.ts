@@ -5,6 +5,8 @@ import type { Colours } from './colours';
 import { fromWall, toWall } from './local-time';
 import { valueAt, type ChartBand, type ChartLine, type ChartModel } from './model';
 
+/** A span so short that its ticks lie seconds apart. */
+const MINUTES_S = 600;
 const GRID = { top: 30, bottom: 62 } as const;
 const FAMILY = '"Inter Tight Variable", system-ui, sans-serif';
 
@@ -118,7 +120,8 @@ interface Label {
 export function labelsOf(model: ChartModel, plotPx: number, plotHeight: number): Label[] {
   const order = { crimson: 0, rust: 1, plum: 2, slate: 3, petrol: 4 } as const;
   const perPx = (model.to - model.from) / Math.max(1, plotPx);
-  const when = model.to - model.from > 36 * 3600 ? shortDate : clock;
+  const spanS = model.to - model.from;
+  const when = spanS > 36 * 3600 ? shortDate : spanS <= MINUTES_S ? clockSeconds : clock;
   const taken: { lane: number; from: number; to: number }[] = [];
   const labels: Label[] = [];
   for (const mark of [...model.marks].sort((a, b) => order[a.tone] - order[b.tone] || b.from - a.from)) {
@@ -221,6 +224,7 @@ function axisWords(model: ChartModel): (wallMs: number) => string {
   const spanS = model.to - model.from;
   return (wallMs) => {
     const midnight = wallMs % 86_400_000 === 0;
+    if (spanS <= MINUTES_S) return clockSeconds(wallMs, 'UTC');
     if (spanS <= 36 * 3600 || !midnight) return clock(wallMs, 'UTC');
     if (spanS > 100 * 86_400 && new Date(wallMs).getUTCDate() === 1) return monthWords(wallMs);
     return shortDate(wallMs, 'UTC');
@@ -268,6 +272,10 @@ export function chartOptions(
     yAxis: {
       type: 'value',
       scale: !model.fromZero,
+      // a zero that is measured a hair below itself opens no room below the axis
+      ...(model.fromZero && {
+        min: ({ min, max }: { min: number; max: number }) => (min < -0.02 * max ? undefined : 0),
+      }),
       name: model.unit,
       nameGap: 12,
       nameTextStyle: { ...text, align: 'right', padding: [0, 8, 0, 0] },

@@ -70,7 +70,7 @@ export function LayPanel({ strings, string, placed, form, read, tried, onString,
           options={[
             ...directions.map((d, i) => ({
               value: String(d),
-              label: i < 2 ? `${compass(d)}, along the eaves` : compass(d),
+              label: i < 2 ? `${compass(d)} (eaves)` : compass(d),
             })),
             { value: 'other', label: 'in degrees' },
           ]}

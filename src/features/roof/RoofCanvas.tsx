@@ -25,6 +25,7 @@ interface Props {
   onRemove: (index: number) => void;
 }
 const WIDTH = 1000;
+const INK = { chosen: SCREEN.ink, other: SCREEN.slate, planned: SCREEN.petrol } as const;
 /** Half of a finger's target, in CSS pixels. */
 const FINGER_PX = 22;
 
@@ -122,6 +123,9 @@ export function RoofCanvas({ outline, paths, start, mode, onPoint, onMove, onRem
       {paths.map((p) => (
         <StringPath key={`${p.id} ${p.look}`} path={p} sheet={sheet} px={px} />
       ))}
+      {paths.map((p) => (
+        <StringName key={`${p.id} ${p.look}`} path={p} sheet={sheet} px={px} />
+      ))}
       {start && (
         <g
           transform={`translate(${sheet.at(start).x} ${sheet.at(start).y})`}
@@ -208,14 +212,10 @@ export function RoofCanvas({ outline, paths, start, mode, onPoint, onMove, onRem
 }
 
 function StringPath({ path, sheet, px }: { path: DrawnPath; sheet: Sheet; px: number }) {
-  const { spots, look, name } = path;
-  const [first] = spots;
-  const last = spots.at(-1);
-  if (!first || !last) return null;
-  const ink = look === 'other' ? SCREEN.slate : look === 'planned' ? SCREEN.petrol : SCREEN.ink;
+  const { spots, look } = path;
+  if (spots.length === 0) return null;
+  const ink = INK[look];
   const at = spots.map((s) => sheet.at(s));
-  const begins = sheet.at(first);
-  const ends = sheet.at(last);
   return (
     <g>
       <path
@@ -237,24 +237,36 @@ function StringPath({ path, sheet, px }: { path: DrawnPath; sheet: Sheet; px: nu
           />
         );
       })}
-      <g
-        fontSize={12 * px}
-        fontFamily="inherit"
-        fontWeight="600"
-        fill={look === 'other' ? SCREEN.ink2 : ink}
-        stroke={SCREEN.sheet}
-        strokeWidth={3 * px}
-        paintOrder="stroke"
-      >
-        <text x={begins.x - 8 * px} y={begins.y + 4 * px} textAnchor="end">
-          {name} −
+    </g>
+  );
+}
+
+/** Its name where it begins, above all lines: other strings run through the room beside it. */
+function StringName({ path, sheet, px }: { path: DrawnPath; sheet: Sheet; px: number }) {
+  const { spots, look, name } = path;
+  const [first] = spots;
+  const last = spots.at(-1);
+  if (!first || !last) return null;
+  const begins = sheet.at(first);
+  const ends = sheet.at(last);
+  return (
+    <g
+      fontSize={12 * px}
+      fontFamily="inherit"
+      fontWeight="600"
+      fill={look === 'other' ? SCREEN.ink2 : INK[look]}
+      stroke={SCREEN.sheet}
+      strokeWidth={4 * px}
+      paintOrder="stroke"
+    >
+      <text x={begins.x - 3 * px} y={begins.y - 8 * px}>
+        {name} −
+      </text>
+      {look !== 'other' && spots.length > 1 && (
+        <text x={ends.x + 3 * px} y={ends.y - 8 * px} textAnchor="end">
+          {last.position}
         </text>
-        {look !== 'other' && spots.length > 1 && (
-          <text x={ends.x} y={ends.y + 18 * px} textAnchor="middle">
-            {last.position}
-          </text>
-        )}
-      </g>
+      )}
     </g>
   );
 }

@@ -38,8 +38,8 @@ export const RANGES = {
 } as const satisfies Partial<Record<keyof LayingForm, NumberRange>>;
 export type NumberKey = keyof typeof RANGES;
 export const LABELS: Record<NumberKey, string> = {
-  startX: 'First module x',
-  startY: 'First module y',
+  startX: 'First module, east',
+  startY: 'First module, north',
   direction: 'Row runs towards',
   perRow: 'Modules in a row',
   gapAlong: 'Between modules',
