@@ -26,7 +26,7 @@ export function Heading({ crumbs, finding, sentence, actions }: Props) {
                 <li key={`${i} ${crumb.label}`} className="flex gap-1">
                   {i > 0 && <span aria-hidden="true">/</span>}
                   {crumb.href ? (
-                    <a href={crumb.href} className="text-petrol hover:underline">
+                    <a href={crumb.href} className="-my-[13px] py-[13px] text-petrol hover:underline">
                       {crumb.label}
                     </a>
                   ) : (

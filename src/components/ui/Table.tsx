@@ -67,7 +67,10 @@ export function Table<Row>({ caption, columns, rows, rowKey, sorting, onSort, em
                       }
                     >
                       {column.label}
-                      <span aria-hidden="true" className="w-3 text-center text-xs">
+                      <span
+                        aria-hidden="true"
+                        className={`w-3 text-center text-xs ${column.numeric ? 'order-first' : ''}`}
+                      >
                         {sorted ? (sorted.descending ? '↓' : '↑') : ''}
                       </span>
                     </button>

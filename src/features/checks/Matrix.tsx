@@ -64,7 +64,7 @@ export function Matrix({ rows, view, open, now, timeZone, onOpen, onSort, chosen
                 scope="col"
                 className="hidden w-[30px] p-0 text-center align-bottom font-medium lg:table-cell"
               >
-                <span className="mx-auto mb-2 inline-block rotate-180 whitespace-nowrap [writing-mode:vertical-rl]">
+                <span className="mx-auto mb-2 mt-4 inline-block rotate-180 whitespace-nowrap [writing-mode:vertical-rl]">
                   {cell.check.name}
                 </span>
               </th>

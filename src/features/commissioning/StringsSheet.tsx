@@ -28,7 +28,7 @@ export function StringsSheet({ siteId, tally, view: initial }: Props) {
       cell: (s) => (
         <a
           href={paths.string(siteId, s.string.id)}
-          className="inline-flex min-h-[36px] items-center font-semibold hover:underline"
+          className="target inline-flex items-center font-semibold hover:underline"
         >
           {s.string.name}
         </a>
