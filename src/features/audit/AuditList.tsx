@@ -4,13 +4,41 @@ import { Notice } from '../../components/ui/Notice';
 import { SearchInput } from '../../components/ui/SearchInput';
 import { Sheet } from '../../components/ui/Sheet';
 import { SiteTime } from '../../components/ui/Time';
+import { counted } from '../../drawings/numbers';
 import { withQuery } from '../../lib/api';
 import { AUDIT_AREAS, type AuditItem, type AuditPage, type AuditView } from '../../schemas/api/audit';
 import { paths } from '../../schemas/paths';
-import { actionWords, AREA_WORDS, changesOf } from './words';
+import { actionWords, AREA_WORDS, changesOf, subjectWords } from './words';
+
+/** The fields of an entry that are seen at once. */
+const SHOWN_CHANGES = 4;
+
+function Changes({ changes }: { changes: ReturnType<typeof changesOf> }) {
+  return (
+    <dl>
+      {changes.map((c) => (
+        <div key={c.field} className="flex flex-wrap gap-x-2">
+          <dt className="text-ink-2">{c.field}</dt>
+          <dd
+            className="line-clamp-3 min-w-0 break-words [overflow-wrap:anywhere]"
+            title={c.after ?? undefined}
+          >
+            {c.before !== null && (
+              <>
+                <del className="text-ink-2">{c.before}</del>{' '}
+              </>
+            )}
+            {c.after !== null && <ins className="no-underline">{c.after}</ins>}
+          </dd>
+        </div>
+      ))}
+    </dl>
+  );
+}
 
 function Entry({ item, at, timeZone }: { item: AuditItem; at: string; timeZone: string }) {
   const changes = changesOf(item);
+  const subject = subjectWords(item.subject);
   return (
     <li className="grid gap-x-6 gap-y-1 py-3 lg:grid-cols-[170px_minmax(0,1fr)_minmax(0,1.2fr)]">
       <p className="text-sm text-ink-2">
@@ -27,27 +55,23 @@ function Entry({ item, at, timeZone }: { item: AuditItem; at: string; timeZone: 
               {item.site.name}
             </a>
           )}
-          {item.site && ' · '}
-          {item.subject}
+          {item.site && subject && ' · '}
+          {subject}
         </p>
         {item.reason && <p className="mt-1 break-words">{item.reason}</p>}
       </div>
       {changes.length > 0 && (
-        <dl className="min-w-0 text-sm">
-          {changes.map((c) => (
-            <div key={c.field} className="flex flex-wrap gap-x-2">
-              <dt className="text-ink-2">{c.field}</dt>
-              <dd className="min-w-0 break-all">
-                {c.before !== null && (
-                  <>
-                    <del className="text-ink-2">{c.before}</del>{' '}
-                  </>
-                )}
-                {c.after !== null && <ins className="no-underline">{c.after}</ins>}
-              </dd>
-            </div>
-          ))}
-        </dl>
+        <div className="min-w-0 text-sm">
+          <Changes changes={changes.slice(0, SHOWN_CHANGES)} />
+          {changes.length > SHOWN_CHANGES && (
+            <details>
+              <summary className="target flex cursor-pointer items-center text-ink-2">
+                {counted(changes.length - SHOWN_CHANGES, 'more field')}
+              </summary>
+              <Changes changes={changes.slice(SHOWN_CHANGES)} />
+            </details>
+          )}
+        </div>
       )}
     </li>
   );

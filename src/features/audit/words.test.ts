@@ -1,10 +1,26 @@
 import { describe, expect, it } from 'vitest';
-import { actionWords, changesOf } from './words';
+import { actionWords, changesOf, subjectWords } from './words';
 
 describe('an entry in words', () => {
   it('says what was done, also where it has no words yet', () => {
     expect(actionWords('people.deactivated')).toBe('deactivated a person');
+    expect(actionWords('as_built.inverter_added')).toBe('added an inverter');
+    expect(actionWords('as_built.plane_deleted')).toBe('deleted a plane');
     expect(actionWords('some_area.did_it')).toBe('some area: did it');
+  });
+
+  it('leaves out what only machines read', () => {
+    expect(subjectWords('shutdown test 65b42a41-89ef-4328-b178-3bb023092cc0')).toBe('shutdown test');
+    expect(subjectWords('unit T8E2-02ED-97')).toBe('unit T8E2-02ED-97');
+    expect(
+      changesOf({
+        before: null,
+        after: { kiosk: true, endsOn: null, slots: [{ moduleType: 'Mono 450', roofX: null }] },
+      }),
+    ).toEqual([
+      { field: 'kiosk', before: null, after: 'yes' },
+      { field: 'slots', before: null, after: 'module type Mono 450' },
+    ]);
   });
 
   it('shows only what differs', () => {
@@ -19,7 +35,7 @@ describe('an entry in words', () => {
     ]);
     expect(changesOf({ before: { serial: 'A1', sites: ['x'] }, after: null })).toEqual([
       { field: 'serial', before: 'A1', after: null },
-      { field: 'sites', before: '["x"]', after: null },
+      { field: 'sites', before: 'x', after: null },
     ]);
   });
 });

@@ -42,8 +42,11 @@ const ACTIONS: Record<string, string> = {
   'as_built.unit_removed': 'removed a unit',
   'equipment.create': 'added a type of equipment',
   'equipment.change': 'changed a type of equipment',
+  'equipment.archive': 'archived a type of equipment',
+  'equipment.restore': 'took a type of equipment out of the archive',
   'connector_pair.record': 'recorded a connector pair',
   'connector_pair.end': 'ended a connector pair',
+  'connector_pair.file': 'kept the document of a connector pair',
   'isolation.start': 'began to watch an isolated string',
   'isolation.stop': 'ended the watch of an isolated string',
   'hazard.acknowledge': 'acknowledged a hazard',
@@ -52,21 +55,54 @@ const ACTIONS: Record<string, string> = {
   'checks.sign_off': 'signed the install checks of a string',
   'commissioning.gap_accepted': 'accepted a gap as it is',
   'handover.made': 'made a handover pack',
+  'shutdown_test.start': 'started a shutdown test',
+  'shutdown_test.end': 'ended a shutdown test without a signature',
   'shutdown_test.sign': 'signed a shutdown test',
 };
 
+/** The parts of an as-built are added, changed and deleted alike: "added a plane". */
+const PART_ACTION = /^as_built\.([a-z]+)_(added|changed|deleted)$/;
+
 /** What was done, in words; what has none yet says its own name plainly. */
-export const actionWords = (action: string): string =>
-  ACTIONS[action] ?? action.replaceAll('.', ': ').replaceAll('_', ' ');
+export function actionWords(action: string): string {
+  const known = ACTIONS[action];
+  if (known) return known;
+  const [, part, done] = PART_ACTION.exec(action) ?? [];
+  if (part && done) return `${done} ${/^[aeiou]/.test(part) ? 'an' : 'a'} ${part}`;
+  return action.replaceAll('.', ': ').replaceAll('_', ' ');
+}
+
+/** What it was done to, without the marks that only machines read. */
+export const subjectWords = (subject: string): string =>
+  subject
+    .replace(/\s*\b[0-9a-f]{8}(-[0-9a-f]{4}){3}-[0-9a-f]{12}\b/g, '')
+    .replaceAll('_', ' ')
+    .trim();
+
+/** "moduleType" as "module type". */
+const fieldWords = (field: string): string =>
+  field
+    .replace(/([a-z])([A-Z])/g, '$1 $2')
+    .replaceAll('_', ' ')
+    .toLowerCase();
 
 const said = (value: unknown): string =>
   value === null || value === undefined
     ? 'nothing'
     : typeof value === 'string'
       ? value
-      : typeof value === 'object'
-        ? JSON.stringify(value)
-        : String(value);
+      : typeof value === 'boolean'
+        ? value
+          ? 'yes'
+          : 'no'
+        : Array.isArray(value)
+          ? value.map(said).join('; ')
+          : typeof value === 'object'
+            ? Object.entries(value)
+                .filter(([, v]) => v !== null && v !== '')
+                .map(([key, v]) => `${fieldWords(key)} ${said(v)}`)
+                .join(', ')
+            : String(value);
 
 const fieldsOf = (value: unknown): Record<string, unknown> =>
   typeof value === 'object' && value !== null && !Array.isArray(value)
@@ -86,14 +122,11 @@ export function changesOf({ before, after }: Pick<AuditItem, 'before' | 'after'>
   return [...new Set([...Object.keys(old), ...Object.keys(now)])].flatMap((field) => {
     const was = field in old ? said(old[field]) : null;
     const is = field in now ? said(now[field]) : null;
-    return was === is
+    return was === is || (was === null && is === 'nothing')
       ? []
       : [
           {
-            field: field
-              .replace(/([a-z])([A-Z])/g, '$1 $2')
-              .replaceAll('_', ' ')
-              .toLowerCase(),
+            field: fieldWords(field),
             before: was,
             after: is,
           },
