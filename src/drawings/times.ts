@@ -41,11 +41,13 @@ export function localDay(at: Instant, timeZone: string): string {
   const of = (type: string) => parts.find((p) => p.type === type)?.value ?? '';
   return `${of('year')}-${of('month')}-${of('day')}`;
 }
-/** The clock while it is today there, else day and clock: "14:02", "3 Nov, 14:02". */
+/** The clock while it is today there, else day and clock, or the date of another year: "14:02", "3 Nov, 14:02", "3 November 2024". */
 export const clockOrDate = (at: Instant, now: Instant, timeZone: string): string =>
   localDay(at, timeZone) === localDay(now, timeZone)
     ? clock(at, timeZone)
-    : `${shortDate(at, timeZone)}, ${clock(at, timeZone)}`;
+    : localDay(at, timeZone).slice(0, 4) === localDay(now, timeZone).slice(0, 4)
+      ? `${shortDate(at, timeZone)}, ${clock(at, timeZone)}`
+      : longDate(at, timeZone);
 
 /** A length of time in its largest whole part: "18 s", "41 min", "3 h", "5 days". */
 export function duration(seconds: number): string {

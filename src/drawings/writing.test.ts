@@ -61,6 +61,7 @@ describe('times', () => {
   it('name the day only when it is another there', () => {
     expect(clockOrDate(at, '2026-11-04T02:00:00Z', 'Asia/Manila')).toBe('07:02');
     expect(clockOrDate(at, '2026-11-04T02:00:00Z', 'UTC')).toBe('3 Nov, 23:02');
+    expect(clockOrDate(at, '2027-01-04T02:00:00Z', 'UTC')).toBe('3 November 2026');
   });
 
   it.each([

@@ -68,7 +68,8 @@ export interface Step {
   gaps: Gap[];
 }
 
-const counted = (n: number, one: string, many = `${one}s`): string => `${n} ${n === 1 ? one : many}`;
+const figure = (n: number): string => n.toLocaleString('en-GB');
+const counted = (n: number, one: string, many = `${one}s`): string => `${figure(n)} ${n === 1 ? one : many}`;
 /** "B1, B2 and 3 more". */
 function named(names: readonly string[], most = 4): string {
   if (names.length <= most + 1)
@@ -103,7 +104,7 @@ function asBuilt({ strings, zones }: CommissioningFacts): Draft {
         ? 'nothing entered'
         : placed === slots
           ? `${counted(slots, 'unit')}, ${counted(strings.length, 'string')}`
-          : `${placed} of ${counted(slots, 'unit')}, ${counted(strings.length, 'string')}`,
+          : `${figure(placed)} of ${counted(slots, 'unit')}, ${counted(strings.length, 'string')}`,
     gaps,
   };
 }
@@ -170,7 +171,7 @@ function rollCall(facts: CommissioningFacts): Draft | null {
   const begun = facts.rollCallStarted || heard > 0;
   return {
     state: !begun ? 'not_started' : gaps.length === 0 && roster > 0 ? 'done' : 'under_way',
-    words: begun ? `${heard} of ${roster} heard` : 'not started',
+    words: begun ? `${figure(heard)} of ${figure(roster)} heard` : 'not started',
     gaps,
   };
 }

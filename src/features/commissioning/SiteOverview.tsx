@@ -158,8 +158,12 @@ export function SiteOverview({ initial, at, mayAccept, children }: Props) {
         <div className="grid content-start gap-5">
           {openGaps(site.steps).length > 0 && (
             <Caution strong="Treat every string as live">
-              until its roll call is complete and its shutdown has been measured. Local code and the authority
-              having jurisdiction come first.
+              {site.steps.every(
+                (s) => (s.key !== 'roll_call' && s.key !== 'shutdown_test') || s.state === 'done',
+              )
+                ? 'until you have isolated it and proved it dead with a rated meter. '
+                : 'until its roll call is complete and its shutdown has been measured. '}
+              Local code and the authority having jurisdiction come first.
             </Caution>
           )}
           {children}

@@ -76,7 +76,7 @@ describe('the list of sites under way', () => {
 
 describe('the heading of a site', () => {
   it('counts what blocks', () => {
-    expect(siteHeading(site('A'))).toMatchObject({ finding: '1 of 3 steps are done' });
+    expect(siteHeading(site('A'))).toMatchObject({ finding: 'One of 3\u00a0steps is done' });
     expect(siteHeading(site('A')).sentence.replaceAll('\u00a0', ' ')).toContain(
       '2 points block the handover',
     );

@@ -1,5 +1,5 @@
 import { currentStep, openGaps } from '../../domain/commissioning/steps';
-import { counted, number } from '../../drawings/numbers';
+import { countAtStart, counted, number } from '../../drawings/numbers';
 import type { SiteSteps, UnderWayView } from '../../schemas/api/commissioning';
 
 export const UNDER_WAY_DEFAULTS: UnderWayView = { q: '', step: 'all', sort: 'name' };
@@ -45,6 +45,11 @@ export function underWayHeading(sites: readonly SiteSteps[]): string {
     : `${number(sites.length)} sites are being commissioned`;
 }
 
+const LIVE_UNTIL_MEASURED = 'Reports prove nothing dead: isolate and measure before touching a conductor.';
+/** Whether every unit that can answer has. */
+export const rollCalled = (site: SiteSteps): boolean =>
+  site.steps.every((s) => s.key !== 'roll_call' || s.state === 'done');
+
 /** The heading of one site's page. */
 export function siteHeading(site: SiteSteps): { finding: string; sentence: string } {
   const gaps = openGaps(site.steps);
@@ -60,7 +65,7 @@ export function siteHeading(site: SiteSteps): { finding: string; sentence: strin
       sentence: 'Every step before it is done, or its gaps are accepted by name.',
     };
   return {
-    finding: `${done} of ${site.steps.length} steps are done`,
-    sentence: `${counted(gaps.length, 'point blocks', 'points block')} the handover. Until the roll call is complete, treat every string as live.`,
+    finding: `${countAtStart(done)} of ${counted(site.steps.length, 'step')} ${done === 1 ? 'is' : 'are'} done`,
+    sentence: `${counted(gaps.length, 'point blocks', 'points block')} the handover. ${rollCalled(site) ? LIVE_UNTIL_MEASURED : 'Until the roll call is complete, treat every string as live.'}`,
   };
 }

@@ -1,6 +1,6 @@
 import { useQuery } from '@tanstack/react-query';
 import { useState } from 'react';
-import { Steps } from '../../components/commissioning/Steps';
+import { STEP_NAMES, Steps } from '../../components/commissioning/Steps';
 import { Button, ButtonLink } from '../../components/ui/Button';
 import { Heading } from '../../components/ui/Heading';
 import { NotRead } from '../../components/ui/NotRead';
@@ -141,6 +141,30 @@ function MakePanel({ page, onMade }: { page: HandoverPage; onMade: () => void })
   );
 }
 
+/** Up to so many points are all seen at once. */
+const FEW_POINTS = 24;
+
+/** What is open of one step; a long list is one tap away. */
+function StepPoints({ step, few }: { step: HandoverPage['site']['steps'][number]; few: boolean }) {
+  const open = openGaps([step]);
+  if (open.length === 0) return null;
+  return (
+    <details open={few || open.length <= 3}>
+      <summary className="target flex cursor-pointer items-center gap-x-2 font-medium">
+        {STEP_NAMES[step.key]}
+        <span className="font-normal text-ink-2">{counted(open.length, 'point')}</span>
+      </summary>
+      <ul className="divide-y divide-rule-faint">
+        {open.map((gap) => (
+          <li key={gap.key} className="py-2">
+            {gap.words}
+          </li>
+        ))}
+      </ul>
+    </details>
+  );
+}
+
 /** The handover of a site: what blocks it, its papers version by version, and the making of the next. */
 export function Handover({ initial, mayMake }: Props) {
   const client = queryClient();
@@ -185,13 +209,11 @@ export function Handover({ initial, mayMake }: Props) {
                 </a>
               }
             >
-              <ul className="divide-y divide-rule-faint">
-                {open.map((gap) => (
-                  <li key={gap.key} className="py-2">
-                    {gap.words}
-                  </li>
+              <div className="grid gap-3">
+                {page.site.steps.map((step) => (
+                  <StepPoints key={step.key} step={step} few={open.length <= FEW_POINTS} />
                 ))}
-              </ul>
+              </div>
             </Sheet>
           )}
           <Sheet
