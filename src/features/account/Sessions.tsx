@@ -1,14 +1,20 @@
+import { useState } from 'react';
 import { Button } from '../../components/ui/Button';
 import { Sheet } from '../../components/ui/Sheet';
 import { Tag } from '../../components/ui/Tag';
 import { RelativeTime } from '../../components/ui/Time';
+import { counted } from '../../drawings/numbers';
 import { paths } from '../../schemas/paths';
 import type { AccountPage } from '../../schemas/api/my-account';
 import { useSending } from './send';
 
+/** So many devices are seen at once, the newest first. */
+const FEW = 8;
+
 /** Where one is signed in, and the way out of each. */
 export function Sessions({ page, onChanged }: { page: AccountPage; onChanged: () => void }) {
   const { busy, fault, send } = useSending();
+  const [all, setAll] = useState(false);
   const others = page.sessions.filter((s) => !s.here);
   const end = async (key?: string) => {
     await send(paths.api.accountSessions(), { method: 'DELETE', body: key ? { key } : {} });
@@ -22,7 +28,7 @@ export function Sessions({ page, onChanged }: { page: AccountPage; onChanged: ()
         </p>
       )}
       <ul className="divide-y divide-rule-faint">
-        {page.sessions.map((s) => (
+        {(all ? page.sessions : page.sessions.slice(0, FEW)).map((s) => (
           <li key={s.key} className="flex flex-wrap items-center justify-between gap-x-4 gap-y-1 py-2.5">
             <div className="min-w-0">
               <p className="font-medium">{s.device}</p>
@@ -41,11 +47,18 @@ export function Sessions({ page, onChanged }: { page: AccountPage; onChanged: ()
           </li>
         ))}
       </ul>
-      {others.length > 1 && (
-        <Button className="mt-3" disabled={busy} onClick={() => void end()}>
-          Sign out everywhere else
-        </Button>
-      )}
+      <div className="mt-3 flex flex-wrap gap-2 empty:hidden">
+        {others.length > 1 && (
+          <Button disabled={busy} onClick={() => void end()}>
+            Sign out everywhere else
+          </Button>
+        )}
+        {!all && page.sessions.length > FEW && (
+          <Button onClick={() => setAll(true)}>
+            Show {counted(page.sessions.length - FEW, 'more device')}
+          </Button>
+        )}
+      </div>
     </Sheet>
   );
 }

@@ -77,8 +77,7 @@ export function HistoryBoard({ initial, view: initialView }: Props) {
           newest ? (
             <>
               {filtered ? 'The newest change that fits, by ' : 'The newest change, by '}
-              {newest.person} at{' '}
-              <SiteTime at={newest.at} now={initial.at} timeZone={site.timeZone} zone />
+              {newest.person} at <SiteTime at={newest.at} now={initial.at} timeZone={site.timeZone} zone />
               {newest.reason ? <>: “{newest.reason}”</> : '.'}
             </>
           ) : (

@@ -201,7 +201,7 @@ export function SiteSheets({ built, mayWrite, onEdit }: Omit<Props, 'onToken'>) 
           <Fact name="Place">
             {site.place || 'not entered'}; {degrees(site.latitude)}, {degrees(site.longitude)}
           </Fact>
-          <Fact name="Time zone">{site.timeZone}</Fact>
+          <Fact name="Time zone">{site.timeZone.replaceAll('_', ' ')}</Fact>
           <Fact name="Rules">
             {choice(RULE_SETS, site.ruleSet)}; {choice(STRUCTURES, site.structure).toLowerCase()}
           </Fact>

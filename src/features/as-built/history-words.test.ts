@@ -24,7 +24,7 @@ describe('an entry of the history', () => {
       'unit_moved',
       { serial: 'OLD-1' },
       { serial: 'NEW-1', from: 'A1-2' },
-      'NEW-1 moved from A1-2 to B3-9, where OLD-1 was',
+      'NEW-1 moved from A1-2 to B3-9, in the place of OLD-1',
     ],
     ['unit_moved', { serial: null }, { serial: 'NEW-1', from: 'A1-2' }, 'NEW-1 moved from A1-2 to B3-9'],
   ])('%s: %j → %j', (action, before, after, words) => {

@@ -31,7 +31,7 @@ export function historyTitle(item: HistoryItem): string {
     case 'unit_replaced':
       return `${before} replaced by ${after} in ${item.of}`;
     case 'unit_moved':
-      return `${after} moved ${from ? `from ${from} ` : ''}to ${item.of}${before ? `, where ${before} was` : ''}`;
+      return `${after} moved ${from ? `from ${from} ` : ''}to ${item.of}${before ? `, in the place of ${before}` : ''}`;
     case 'slots_changed':
       return `Slots of ${item.of} changed`;
     case 'token_made':

@@ -122,7 +122,9 @@ export function ReadingsBoard({ initial, view: first, mayWrite }: Props) {
       cell: (r) => (
         <span className="flex flex-wrap items-center gap-x-2 gap-y-1">
           <Tag tone={TONES[r.outcome]}>{OUTCOME_WORDS[r.outcome]}</Tag>
-          <span className="hidden text-ink-2 sm:inline">{r.headline}</span>
+          <span className={`text-ink-2 ${r.outcome === 'as_expected' ? 'hidden sm:inline' : ''}`}>
+            {r.headline}
+          </span>
         </span>
       ),
     },

@@ -231,7 +231,7 @@ describe('the list of readings', () => {
       ['A3', 'after_roll_call', 'unread'],
     ]);
     expect(readingsHeading(rows)).toBe('1 of 3\u00a0strings reads as expected before energising');
-    expect(readingsSentence(rows).strong).toContain('A2: The string is reversed');
+    expect(readingsSentence(rows).strong).toContain('A2: the string is reversed');
     expect(readingsSentence(rows).rest).toBe('A3 is not read.');
     expect(readingsHeading([])).toBe('No string has slots to read yet');
   });

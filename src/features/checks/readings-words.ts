@@ -4,6 +4,10 @@ import { stageUnderWay, type Outcome, type ReadingRow } from './readings-rows';
 
 /** The sentences of the readings page. */
 
+/** As it goes on after a colon; names of strings keep their capital. */
+const goingOn = (headline: string): string =>
+  headline.replace(/^[A-Z](?=[a-z ])/, (letter) => letter.toLowerCase());
+
 export const OUTCOME_WORDS: Record<Outcome, string> = {
   as_expected: 'as expected',
   finding: 'not as expected',
@@ -45,7 +49,7 @@ export function readingsSentence(rows: readonly ReadingRow[]): { strong: string;
     strong: !first
       ? ''
       : findings.length === 1
-        ? `${first.string.name}: ${first.headline}.`
+        ? `${first.string.name}: ${goingOn(first.headline)}.`
         : `${few(findings.map((r) => r.string.name))} do not read as they should.`,
     rest: rest.join(' '),
   };

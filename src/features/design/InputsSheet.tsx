@@ -19,8 +19,8 @@ export function InputsSheet({ design }: { design: SiteDesign }) {
   );
   const estimated = coldest.from === 'estimated' || hottest.from === 'estimated';
   const facts = [
-    { term: 'Coldest expected', words: temperature(coldest) },
-    { term: 'Hottest air', words: temperature(hottest) },
+    { term: 'Coldest expected air', words: temperature(coldest) },
+    { term: 'Hottest expected air', words: temperature(hottest) },
     { term: 'Structure', words: labelOf(STRUCTURES, design.structure) },
     { term: 'Rule set', words: labelOf(RULE_SETS, design.ruleSet) },
   ];

@@ -125,8 +125,8 @@ const NEW_SENTENCE: Record<EquipmentFamily, string> = {
 };
 
 function sentenceOf(item: CatalogueItem, changed: string | null): ReactNode {
-  const use = usedWords(item);
-  return `${use.charAt(0).toUpperCase()}${use.slice(1)}.${changed ? ` Last changed by ${changed}.` : ''}`;
+  const use = item.strings + item.types === 0 ? 'Not used yet' : `Used by ${usedWords(item)}`;
+  return `${use}.${changed ? ` Last changed by ${changed}.` : ''}`;
 }
 
 type Form = ReturnType<typeof useTypeForm>;

@@ -58,7 +58,7 @@ describe('a list of the catalogue', () => {
     expect(shownItems(archived, { ...EQUIPMENT_DEFAULTS, show: 'archived' })).toHaveLength(5);
   });
   it('says what is found and what rests on a type', () => {
-    expect(listFinding(modules).heading).toBe('Five module types, 1 in use');
+    expect(listFinding(modules).heading).toBe('Five module types, one in use');
     expect(listFinding({ ...modules, items: [] }).heading).toBe('No module type yet');
     const [used] = modules.items;
     if (!used) throw new Error('no item');

@@ -57,9 +57,9 @@ const MIDDLE: Record<Catalogue['family'], (names: Map<string, string>) => Column
       from: 'sm',
       cell: (row) => power(watts(row)),
     },
-    figure('vocRef', 'voc', volts, 'sm'),
-    figure('iscRef', 'isc', (v) => quantity(v, 'A', 2), 'sm'),
-    figure('betaVoc', 'voc per K', (v) => quantity(v === null ? null : 100 * v, '%', 2), 'md'),
+    figure('vocRef', 'Voc', volts, 'sm'),
+    figure('iscRef', 'Isc', (v) => quantity(v, 'A', 2), 'sm'),
+    figure('betaVoc', 'Voc per K', (v) => quantity(v === null ? null : 100 * v, '%', 2), 'md'),
     {
       key: 'connector',
       label: 'Connector',
@@ -98,7 +98,7 @@ const MIDDLE: Record<Catalogue['family'], (names: Map<string, string>) => Column
       from: 'md',
       cell: (row) => `${number(n(row, 'mpptMin'))} to ${volts(n(row, 'mpptMax'))}`,
     },
-    figure('iscMax', 'isc of one input', current, 'lg'),
+    figure('iscMax', 'Isc of one input', current, 'lg'),
   ],
 };
 

@@ -18,7 +18,7 @@ export const ONE: Record<EquipmentFamily, string> = {
 const FOLLOWS: Record<EquipmentFamily, string> = {
   modules: 'Expected voltages, design checks and low-output findings rest on these datasheets.',
   units:
-    'What a reading means depends on how a unit behaves: screens that rest on it say "according to the type entered".',
+    'What a reading means depends on how a unit behaves: screens that rest on it say “according to the type entered”.',
   connectors:
     'Two halves must be of identical type and maker, or documented as intermatable: that they click together proves nothing.',
   inverters: 'Design checks hold each string’s voltage and current against these limits.',
@@ -52,7 +52,7 @@ export function listFinding(catalogue: Catalogue): { heading: string; sentence: 
         ? used === 1
           ? 'in use'
           : 'all in use'
-        : `${used} in use`;
+        : `${countAtStart(used).toLowerCase()} in use`;
   return { heading: `${countAtStart(live.length)} ${many}, ${use}`, sentence };
 }
 

@@ -45,7 +45,7 @@ describe('the heading', () => {
   });
   it('warns where one manager is alone', () => {
     const words = peopleFinding(page([person('Ada', { role: 'manager' }), person('Bo')]));
-    expect(words.finding).toBe('2 people can sign in');
+    expect(words.finding).toBe('Two people can sign in');
     expect(words.sentence).toContain('Ada is the only manager');
   });
   it('counts managers otherwise', () => {

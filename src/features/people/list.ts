@@ -1,4 +1,4 @@
-import { counted, number } from '../../drawings/numbers';
+import { countAtStart, counted, number } from '../../drawings/numbers';
 import type { InvitationItem, PeoplePage, PeopleView, PersonItem } from '../../schemas/api/people';
 
 export const PEOPLE_DEFAULTS: PeopleView = { q: '', role: 'all', show: 'active', sort: 'name' };
@@ -31,7 +31,7 @@ export function peopleFinding({ people, invitations }: PeoplePage): { finding: s
   const open = invitations.filter((i) => i.state === 'open').length;
   const waiting = open > 0 ? ` ${counted(open, 'invitation waits', 'invitations wait')}.` : '';
   return {
-    finding: `${active.length === 1 ? 'One person' : `${number(active.length)} people`} can sign in`,
+    finding: `${active.length === 1 ? 'One person' : `${countAtStart(active.length)} people`} can sign in`,
     sentence:
       managers.length === 1
         ? `${managers[0]?.name ?? ''} is the only manager: invite a second one, so that nobody is locked out.${waiting}`

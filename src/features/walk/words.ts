@@ -27,7 +27,9 @@ export function walkHeading(page: WalkPage, stops: readonly Stop[]): string {
     return page.rollCalled ? 'Nobody has to go on the roof' : 'No stops before the roll call';
   const planes = new Set(stops.flatMap((s) => page.roof.find((r) => r.stringId === s.stringId)?.plane ?? []));
   const where =
-    planes.size === 1 ? ` on the ${planeWords([...planes][0] ?? '')}` : ` on ${planes.size} planes`;
+    planes.size === 1
+      ? ` on the ${planeWords([...planes][0] ?? '')}`
+      : ` on ${countAtStart(planes.size).toLowerCase()} planes`;
   return `${countAtStart(stops.length)} ${stops.length === 1 ? 'stop' : 'stops'}${planes.size > 0 ? where : ''}`;
 }
 

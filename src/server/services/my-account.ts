@@ -23,7 +23,7 @@ const HOUR_MS = 3_600_000;
 
 /** Browser and system in a few words, from what a browser says of itself; nothing that only a guess could tell. */
 export function deviceWords(agent: string | null): string {
-  if (!agent) return 'an unknown device';
+  if (!agent) return 'An unknown device';
   const browser =
     [
       ['Edg/', 'Edge'],
@@ -31,7 +31,7 @@ export function deviceWords(agent: string | null): string {
       ['OPR/', 'Opera'],
       ['Chrome/', 'Chrome'],
       ['Safari/', 'Safari'],
-    ].find(([mark]) => agent.includes(mark ?? ''))?.[1] ?? 'a browser';
+    ].find(([mark]) => agent.includes(mark ?? ''))?.[1] ?? 'A browser';
   const system =
     [
       ['Android', 'Android'],
