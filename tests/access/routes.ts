@@ -141,8 +141,8 @@ export const ROUTES: readonly Route[] = [
     permission: 'roll_call.run',
     of: 'site',
     path: (t) => `/api/sites/${t.site}/isolation`,
-    body: {},
-    served: [422],
+    body: (t: Target) => ({ string: t.string, personOnSite: 'Per Aalto', caution: true }),
+    served: [200, 201, 409], // the first begins, others are told that one runs
   },
   {
     file: 'api/sites/[site]/isolation/stop.ts',
@@ -158,8 +158,15 @@ export const ROUTES: readonly Route[] = [
     permission: 'as_built.write',
     of: 'site',
     path: (t) => `/api/sites/${t.site}/roll-call/place`,
-    body: {},
-    served: [422],
+    // another unit is in that slot than the editor saw: nothing is written
+    body: (t: Target) => ({
+      kind: 'replace',
+      slots: [{ string: t.string, position: 1, serial: 'NONE-0001', expected: 'NOT-THERE' }],
+      seen: 'NONE-0001 on the label',
+      checked: true,
+      reason: 'for a test',
+    }),
+    served: [409, 422],
   },
   {
     file: 'api/sites/[site]/roll-call/stop.ts',
