@@ -1,3 +1,4 @@
+import { gappedLine } from './gapped-line';
 import { SCREEN, type Paint } from './paint';
 import { ticksTo } from './ticks';
 
@@ -24,15 +25,8 @@ export function TraceLines({ lines, limit, label, width = 720, height = 250, pai
   const top = levels.at(-1) ?? peak;
   const x = (s: number) => plot.left + (s / longest) * (plot.right - plot.left);
   const y = (v: number) => plot.bottom - (Math.max(0, v) / top) * (plot.bottom - plot.top);
-  const path = (voltage: readonly (number | null)[]): string => {
-    let d = '';
-    let drawing = false;
-    voltage.forEach((v, s) => {
-      if (v !== null) d += `${drawing ? 'L' : 'M'}${x(s).toFixed(1)} ${y(v).toFixed(1)}`;
-      drawing = v !== null;
-    });
-    return d;
-  };
+  const path = (voltage: readonly (number | null)[]): string =>
+    gappedLine(voltage.map((v, s) => [x(s), v === null ? null : y(v)]));
   const step = width < 500 ? 30 : 15;
   const seconds = Array.from({ length: Math.floor(longest / step) + 1 }, (_, i) => i * step);
   return (

@@ -1,3 +1,4 @@
+import { gappedLine } from '../../drawings/gapped-line';
 import type { ChartModel } from './model';
 
 /** The curve before the chart library is there: the same data, drawn on the server, without axes. */
@@ -9,21 +10,15 @@ export function ChartSketch({ model, height }: { model: ChartModel; height: numb
   ].filter((v): v is number => v !== null);
   const peak = Math.max(1e-6, ...values);
   const low = model.fromZero ? 0 : Math.min(...values, peak);
-  const x = (at: number) => (((at - model.from) / (model.to - model.from)) * 1000).toFixed(1);
-  const y = (v: number) => (96 - ((v - low) / (peak - low || 1)) * 92).toFixed(1);
-  const path = (at: readonly number[], of: readonly (number | null)[]) => {
-    let pen = false;
-    let d = '';
-    at.forEach((t, i) => {
-      const v = of[i] ?? null;
-      if (v === null) pen = false;
-      else {
-        d += `${pen ? 'L' : 'M'}${x(t)} ${y(v)}`;
-        pen = true;
-      }
-    });
-    return d;
-  };
+  const x = (at: number) => ((at - model.from) / (model.to - model.from)) * 1000;
+  const y = (v: number) => 96 - ((v - low) / (peak - low || 1)) * 92;
+  const path = (at: readonly number[], of: readonly (number | null)[]) =>
+    gappedLine(
+      at.map((t, i) => {
+        const v = of[i] ?? null;
+        return [x(t), v === null ? null : y(v)];
+      }),
+    );
   return (
     <svg
       aria-hidden="true"
@@ -34,9 +29,9 @@ export function ChartSketch({ model, height }: { model: ChartModel; height: numb
       {model.nights.map(([from, to]) => (
         <rect
           key={from}
-          x={x(from)}
+          x={x(from).toFixed(1)}
           y="0"
-          width={Number(x(to)) - Number(x(from))}
+          width={(x(to) - x(from)).toFixed(1)}
           height="100"
           fill="var(--slate-wash)"
           opacity="0.55"
