@@ -1,6 +1,7 @@
 import { encode } from 'uqr';
 import { paths } from '../../schemas/paths';
 import { ButtonLink } from '../ui/Button';
+import { Fold } from '../ui/Fold';
 
 interface Props {
   /** Public identifier of the site. */
@@ -41,14 +42,7 @@ export function OpenOnPhone({ site, siteName, origin }: Props) {
   const address = new URL(paths.capture(site), origin).href;
   const secure = address.startsWith('https:') || /^(localhost|127\.|\[::1\])/.test(new URL(address).hostname);
   return (
-    <details className="group border-b border-t border-rule">
-      <summary className="flex min-h-[44px] cursor-pointer list-none items-center justify-between gap-3">
-        <span className="font-medium">Readings and checks on a phone</span>
-        <span className="text-sm text-petrol underline underline-offset-[3px]">
-          <span className="group-open:hidden">Show the code</span>
-          <span className="hidden group-open:inline">Fold</span>
-        </span>
-      </summary>
+    <Fold title="Readings and checks on a phone" opens="Show the code">
       <div className="flex flex-wrap items-start gap-4 pb-4">
         <QrCode text={address} label={`Code of the address ${address}`} />
         <div className="min-w-0 max-w-[420px] flex-1">
@@ -67,6 +61,6 @@ export function OpenOnPhone({ site, siteName, origin }: Props) {
           </ButtonLink>
         </div>
       </div>
-    </details>
+    </Fold>
   );
 }

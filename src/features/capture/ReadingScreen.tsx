@@ -12,6 +12,7 @@ import { FIELD_AT, LIGHTS, METERS, PLACES, chosen, readForm } from '../../compon
 import { HOW_TO_MEASURE, METER_LABELS, aloud, cautionParts } from '../../components/readings/words';
 import { Button } from '../../components/ui/Button';
 import { Caution } from '../../components/ui/Caution';
+import { Fold } from '../../components/ui/Fold';
 import { Segmented } from '../../components/ui/Segmented';
 import { volts } from '../../drawings/numbers';
 import { corrected } from '../../lib/capture-queue';
@@ -173,16 +174,11 @@ export function ReadingScreen({ phone, state, site, string, view, change, clock,
         What does the meter say?
       </h1>
       <p className="mb-2 mt-0.5 text-[16px] leading-[22px] text-ink-2">{HOW_TO_MEASURE[place]}</p>
-      <details className="group mb-3 border-b border-t border-rule">
-        <summary className="flex min-h-[44px] cursor-pointer list-none items-center justify-between gap-3 py-1.5">
-          <span className="min-w-0 font-medium">
-            {`${capital(STAGE_WORDS[stage])}; ${METER_LABELS[meter]} of the meter`}
-          </span>
-          <span className="shrink-0 text-sm text-petrol underline underline-offset-[3px]">
-            <span className="group-open:hidden">Change</span>
-            <span className="hidden group-open:inline">Fold</span>
-          </span>
-        </summary>
+      <Fold
+        title={`${capital(STAGE_WORDS[stage])}; ${METER_LABELS[meter]} of the meter`}
+        opens="Change"
+        className="mb-3"
+      >
         <div className="space-y-2 pb-3">
           <Segmented
             look="bold"
@@ -194,7 +190,7 @@ export function ReadingScreen({ phone, state, site, string, view, change, clock,
           />
           <MeterInput value={view.meter} onChange={(value) => change({ meter: value })} />
         </div>
-      </details>
+      </Fold>
       <div>
         <MeterPanel
           key={`${string.id} ${place}`}

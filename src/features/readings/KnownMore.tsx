@@ -1,6 +1,7 @@
 import { useState } from 'react';
 import { Button } from '../../components/ui/Button';
 import { Field } from '../../components/ui/Field';
+import { Fold } from '../../components/ui/Fold';
 import {
   OTHERS_MAX,
   othersOf,
@@ -18,14 +19,7 @@ export function KnownMore({ form, faults, typed }: PanelProps) {
   // only at first: a field that is emptied must not fold away under the hand
   const [used] = useState(form.others !== '' || form.poa !== '' || form.cell !== '');
   return (
-    <details className="group border-b border-t border-rule" open={used}>
-      <summary className="flex min-h-[44px] cursor-pointer list-none items-center justify-between gap-3">
-        <span className="font-medium">Do you know more?</span>
-        <span className="text-sm text-petrol underline underline-offset-[3px]">
-          <span className="group-open:hidden">Add it</span>
-          <span className="hidden group-open:inline">Fold</span>
-        </span>
-      </summary>
+    <Fold title="Do you know more?" opens="Add it" open={used}>
       <div className="space-y-5 pb-4 pt-1">
         <fieldset>
           <legend className="font-medium">Other strings of the same types, read under the same light</legend>
@@ -97,6 +91,6 @@ export function KnownMore({ form, faults, typed }: PanelProps) {
           </div>
         </fieldset>
       </div>
-    </details>
+    </Fold>
   );
 }

@@ -2,6 +2,7 @@ import { useState, type ReactNode } from 'react';
 import { UNIT_KINDS } from '../../domain/equipment/unit-type';
 import { Choice } from '../../components/ui/Choice';
 import { Field } from '../../components/ui/Field';
+import { Fold } from '../../components/ui/Fold';
 import { Segmented } from '../../components/ui/Segmented';
 import { RANGES, chosen, type PanelProps } from '../../components/readings/form';
 import { SHEETS, SHEET_KEYS } from '../../components/readings/sheets';
@@ -20,14 +21,7 @@ export function StringPanel({ form, faults, typed, choose }: PanelProps) {
   const [wrong] = useState(['units', ...OWN_FIELDS.map((f) => f.key)].some((key) => faults[key]));
   const own = form.module === 'own';
   return (
-    <details className="group mb-3 border-b border-t border-rule" open={wrong}>
-      <summary className="flex min-h-[44px] cursor-pointer list-none items-center justify-between gap-3 py-1.5">
-        <span className="min-w-0 font-medium">{stringWords(form)}</span>
-        <span className="shrink-0 text-sm text-petrol underline underline-offset-[3px]">
-          <span className="group-open:hidden">Change</span>
-          <span className="hidden group-open:inline">Fold</span>
-        </span>
-      </summary>
+    <Fold title={stringWords(form)} opens="Change" open={wrong} className="mb-3">
       <div className="space-y-4 pb-4 pt-2">
         <Labelled label="Kind of unit">
           <Segmented
@@ -81,7 +75,7 @@ export function StringPanel({ form, faults, typed, choose }: PanelProps) {
           </div>
         )}
       </div>
-    </details>
+    </Fold>
   );
 }
 
