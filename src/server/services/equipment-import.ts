@@ -8,10 +8,8 @@ import type { ImportFault, ImportPreview, ImportRow } from '../../schemas/api/eq
 import { readHeader, readRow, writtenValue } from '../../schemas/equipment-file';
 import type { Tx } from '../db/transaction';
 import { AppError } from '../errors';
-import { catalogueRows, connectorTypes, insertEntry, type CatalogueRow } from '../queries/equipment';
-import { addAuditEntry } from '../queries/people';
-import { subjectOf } from './equipment';
-import { writeChange } from './equipment-save';
+import { catalogueRows, connectorTypes, type CatalogueRow } from '../queries/equipment';
+import { writeChange, writeNew } from './equipment-save';
 
 const MOST_ROWS = 2000;
 
@@ -190,20 +188,7 @@ export async function importTypes(
   for (const { shown, entry, before } of planned) {
     if (before && shown.outcome === 'changed')
       await writeChange(tx, actor, family, { row: before, entry, connectorIds, address });
-    if (before) continue;
-    const { id } = await insertEntry(tx, family, {
-      organisationId: actor.organisationId,
-      entry,
-      connectorIds,
-    });
-    await addAuditEntry(tx, {
-      organisationId: actor.organisationId,
-      personId: actor.personId,
-      address,
-      action: 'equipment.create',
-      subject: subjectOf(family, id),
-      after: entry,
-    });
+    if (!before) await writeNew(tx, actor, family, { entry, connectorIds, address });
   }
   return { ...preview, imported: true };
 }

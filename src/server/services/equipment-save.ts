@@ -115,19 +115,7 @@ export async function createType(
   address: string | null,
 ): Promise<EntrySaved> {
   const { entry, connectorIds } = await acceptedEntry(tx, family, input, undefined);
-  const { id } = await insertEntry(tx, family, {
-    organisationId: actor.organisationId,
-    entry,
-    connectorIds,
-  });
-  await addAuditEntry(tx, {
-    organisationId: actor.organisationId,
-    personId: actor.personId,
-    address,
-    action: 'equipment.create',
-    subject: subjectOf(family, id),
-    after: entry,
-  });
+  const id = await writeNew(tx, actor, family, { entry, connectorIds, address });
   const { item } = await readType(tx, family, id);
   return { id, version: item.version };
 }
@@ -162,6 +150,27 @@ export async function changeType(
   await writeChange(tx, actor, family, { row: found(self, 'type'), entry, connectorIds, address });
   const { item } = await readType(tx, family, ref);
   return { id: ref, version: item.version };
+}
+
+/** Writes a type that was not there; returns its public id. */
+export async function writeNew(
+  tx: Tx,
+  actor: Actor,
+  family: EquipmentFamily,
+  added: { entry: Entry; connectorIds: ReadonlyMap<string, number>; address: string | null },
+): Promise<string> {
+  const { entry, connectorIds, address } = added;
+  const { organisationId, personId } = actor;
+  const { id } = await insertEntry(tx, family, { organisationId, entry, connectorIds });
+  await addAuditEntry(tx, {
+    organisationId,
+    personId,
+    address,
+    action: 'equipment.create',
+    subject: subjectOf(family, id),
+    after: entry,
+  });
+  return id;
 }
 
 /** Writes a change with its before and after, and tells the sites that rest on the type. */
