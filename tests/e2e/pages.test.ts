@@ -1,6 +1,7 @@
 import type { Browser, Page } from 'playwright-core';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import type { Role } from '../../src/domain/access/permissions';
+import { newToken, tokenHash } from '../../src/server/auth/secret-link';
 import { axeFaults } from '../support/axe';
 import { hydrated, settled, startBrowser } from '../support/browser';
 import { testDatabase, type TestDatabase } from '../support/database';
@@ -14,6 +15,9 @@ const HALL = 'Old Tannery Market Hall';
 const CLINIC = 'Weirside Clinic';
 const SCHOOL = 'Kestrel Row School';
 const GALLERY = 'Coopers Wharf Gallery';
+/** Links of the clinic. */
+const SHARED = newToken();
+const SCREEN = newToken();
 
 let db: TestDatabase;
 let fleet: TestFleet;
@@ -32,6 +36,15 @@ beforeAll(async () => {
   );
   const [zone] = [...fleet.site(SCHOOL).zones.keys()];
   if (zone) await command(db.owner, fleet.site(SCHOOL), zone, 'initiator', new Date(at.getTime() - 600_000));
+  for (const [token, kiosk] of [
+    [SHARED, false],
+    [SCREEN, true],
+  ] as const)
+    await db.owner.query(
+      `insert into share_link (site_id, label, kiosk, token_hash, created_by)
+       select $1, 'Lobby', $2, $3, id from person where email = 'manager@lowfield.example'`,
+      [fleet.site(CLINIC).id, kiosk, tokenHash(token)],
+    );
   site = await startSite(db, { WAKELINE_ROLES: 'web' });
   browser = await startBrowser();
 });
@@ -173,6 +186,15 @@ const PAGES: readonly Shown[] = [
   },
   { name: 'the roofs of an owner', role: 'customer', path: () => '/my-site', file: 'my-site/index.astro' },
   { name: 'a roof', role: 'customer', path: () => `/my-site/${refOf(CLINIC)}`, file: 'my-site/[site].astro' },
+  { name: 'a shared page', role: null, path: () => `/shared/${SHARED}`, file: 'shared/[token].astro' },
+  { name: 'a lobby screen', role: null, path: () => `/shared/${SCREEN}`, file: 'shared/[token].astro' },
+  {
+    name: 'a link that is over',
+    role: null,
+    path: () => `/shared/${newToken()}`,
+    file: 'shared/[token].astro',
+    status: 404,
+  },
   { name: 'sign-in', role: null, path: () => '/sign-in', file: 'sign-in.astro' },
   { name: 'nothing here', role: 'analyst', path: () => '/nothing-here', file: '404.astro', status: 404 },
   {

@@ -12,7 +12,6 @@ import {
 } from '../../src/schemas/api/share';
 import { asActor } from '../../src/server/db/transaction';
 import { newToken } from '../../src/server/auth/secret-link';
-import { AppError } from '../../src/server/errors';
 import {
   makeShareLink,
   sharedPage,
@@ -22,6 +21,7 @@ import {
 import { testDatabase, type TestDatabase } from '../support/database';
 import { ask } from '../support/endpoint';
 import { testFleet, type TestFleet } from '../support/fleet';
+import { failure } from '../support/refusal';
 
 const CLINIC = 'Weirside Clinic';
 const OTHER = 'Kestrel Row School';
@@ -49,14 +49,6 @@ beforeAll(async () => {
 });
 afterAll(() => db.drop());
 
-async function failure(work: Promise<unknown>): Promise<AppError> {
-  const error = await work.then(
-    () => undefined,
-    (e: unknown) => e,
-  );
-  if (error instanceof AppError) return error;
-  throw new Error('it should have been refused', { cause: error });
-}
 const make = (more: Partial<ShareLinkBody> = {}, actor = manager, site = CLINIC, at = AT) =>
   asActor(actor, (tx) =>
     makeShareLink(
