@@ -265,6 +265,8 @@ export function chartOptions(
       axisLabel: {
         ...text,
         hideOverlap: true,
+        // seconds are long words: the last would run out of the sheet
+        showMaxLabel: model.to - model.from > MINUTES_S ? undefined : false,
         formatter: axisWords(model),
       },
       axisPointer: { lineStyle: { color: c['ink-3'], type: 'solid', width: 1 } },

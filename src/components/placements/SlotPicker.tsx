@@ -51,7 +51,7 @@ export function SlotPicker({ label, strings, value, onChange, heard = null, isOp
           value={value?.position ?? 0}
           onChange={(e) => value && onChange({ ...value, position: Number(e.target.value) })}
         >
-          <option value={0}>Position from the negative end</option>
+          <option value={0}>Position, from −</option>
           {open.length > 0 ? (
             <>
               <optgroup label="Without a unit that is heard">{open.map(option)}</optgroup>

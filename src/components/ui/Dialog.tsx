@@ -27,7 +27,12 @@ export function Dialog({ open, title, onClose, children }: Props) {
         <>
           <div className="mb-3 flex items-start justify-between gap-4">
             <h2 className="text-lg">{title}</h2>
-            <button type="button" onClick={onClose} className="target px-2 text-ink-2" aria-label="Close">
+            <button
+              type="button"
+              onClick={onClose}
+              className="target -mr-2 -mt-2 min-w-9 text-2xl leading-none text-ink-2 hover:text-ink"
+              aria-label="Close"
+            >
               ×
             </button>
           </div>

@@ -71,7 +71,7 @@ export function Table<Row>({ caption, columns, rows, rowKey, sorting, onSort, em
                         aria-hidden="true"
                         className={`w-3 text-center text-xs ${column.numeric ? 'order-first' : ''}`}
                       >
-                        {sorted ? (sorted.descending ? '↓' : '↑') : ''}
+                        {sorted ? (sorted.descending ? '↓' : '↑') : '\u00a0'}
                       </span>
                     </button>
                   ) : (

@@ -1,4 +1,4 @@
-import { useMemo } from 'react';
+import { useEffect, useMemo } from 'react';
 import { useQuery } from '@tanstack/react-query';
 import { STAGE_WORDS } from '../../domain/commissioning/readings/stages';
 import { Steps } from '../../components/commissioning/Steps';
@@ -69,6 +69,9 @@ export function ReadingsBoard({ initial, view: first, mayWrite }: Props) {
   const here = rows.filter((r) => stage === 'all' || r.stage === stage);
   const open = rows.find((r) => `${r.string.name}.${r.stage}` === view.string);
   const sentence = readingsSentence(rows);
+  useEffect(() => {
+    if (view.string) document.getElementById('reading')?.scrollIntoView({ block: 'nearest' });
+  }, [view.string]);
   const toggle = (r: ReadingRow) => {
     const name = `${r.string.name}.${r.stage}`;
     change({ string: view.string === name ? '' : name });

@@ -150,11 +150,11 @@ function StepPoints({ step, few }: { step: HandoverPage['site']['steps'][number]
   if (open.length === 0) return null;
   return (
     <details open={few || open.length <= 3}>
-      <summary className="target flex cursor-pointer items-center gap-x-2 font-medium">
-        {STEP_NAMES[step.key]}
-        <span className="font-normal text-ink-2">{counted(open.length, 'point')}</span>
+      <summary className="target cursor-pointer py-2 font-medium">
+        {STEP_NAMES[step.key]}{' '}
+        <span className="ml-1 font-normal text-ink-2">{counted(open.length, 'point')}</span>
       </summary>
-      <ul className="divide-y divide-rule-faint">
+      <ul className="divide-y divide-rule-faint pl-4">
         {open.map((gap) => (
           <li key={gap.key} className="py-2">
             {gap.words}

@@ -232,11 +232,11 @@ function asked(
       return unitType.facesAllowed === 'either'
         ? {
             ...plain,
-            asks: `Either face of a ${unitType.name} may look at the back sheet, according to the type entered; the air gap is kept.`,
+            asks: `Either face of the unit (${unitType.name}) may look at the back sheet, according to the type entered; the air gap is kept.`,
           }
         : {
             ...plain,
-            asks: `The label of a ${unitType.name} looks away from the back sheet, according to the type entered.`,
+            asks: `The label of the unit (${unitType.name}) looks away from the back sheet, according to the type entered.`,
           };
     case 'labels':
       return ruleSet === 'none'
