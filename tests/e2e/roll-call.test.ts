@@ -122,7 +122,7 @@ describe('a roll call on a phone', () => {
     await page.getByRole('link', { name: 'Walk to them' }).click();
     await page.waitForURL(/walk$/);
     await hydrated(page);
-    expect(await heading(page)).toBe('Two stops on 2 planes');
+    expect(await heading(page)).toBe('Two stops on two planes');
     expect(plain(await page.locator('header p').last().innerText())).toMatch(/B1-9.*C2-7|C2-7.*B1-9/);
     const roof = page.locator('#roof svg[role="img"]:visible');
     expect(await roof.getAttribute('aria-label')).toContain('B1: 9 unheard');
