@@ -30,7 +30,7 @@ export function Dialog({ open, title, onClose, children }: Props) {
             <button
               type="button"
               onClick={onClose}
-              className="target -mr-2 -mt-2 min-w-9 text-2xl leading-none text-ink-2 hover:text-ink"
+              className="target -mr-3 -mt-2 min-w-[44px] text-2xl leading-none text-ink-2 hover:text-ink"
               aria-label="Close"
             >
               ×

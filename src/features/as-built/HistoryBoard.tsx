@@ -118,7 +118,7 @@ export function HistoryBoard({ initial, view: initialView }: Props) {
           onChange={(person) => change({ person })}
         />
         <ButtonLink
-          className="min-h-11"
+          className="min-h-[44px]"
           href={withQuery(paths.api.asBuiltHistoryCsv(site.id), view)}
           download
         >

@@ -15,10 +15,16 @@ describe('an entry in words', () => {
     expect(
       changesOf({
         before: null,
-        after: { kiosk: true, endsOn: null, slots: [{ moduleType: 'Mono 450', roofX: null }] },
+        after: {
+          kiosk: true,
+          endsOn: null,
+          source: 'on_site',
+          slots: [{ moduleType: 'Mono 450', roofX: null }],
+        },
       }),
     ).toEqual([
       { field: 'kiosk', before: null, after: 'yes' },
+      { field: 'source', before: null, after: 'on site' },
       { field: 'slots', before: null, after: 'module type Mono 450' },
     ]);
   });

@@ -90,7 +90,9 @@ const said = (value: unknown): string =>
   value === null || value === undefined
     ? 'nothing'
     : typeof value === 'string'
-      ? value
+      ? /^[a-z]+(_[a-z]+)+$/.test(value)
+        ? value.replaceAll('_', ' ')
+        : value
       : typeof value === 'boolean'
         ? value
           ? 'yes'

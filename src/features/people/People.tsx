@@ -88,7 +88,11 @@ export function People({ initial, view: initialView, timeZone }: Props) {
             {p.name}
             {p.self && <span className="text-ink-2"> (you)</span>}
           </span>
-          <span className="block break-all text-sm text-ink-2">{p.email}</span>
+          <span className="block text-sm text-ink-2 [overflow-wrap:anywhere]">
+            {p.email.slice(0, p.email.lastIndexOf('@') + 1)}
+            <wbr />
+            {p.email.slice(p.email.lastIndexOf('@') + 1)}
+          </span>
         </>
       ),
     },
