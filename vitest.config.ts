@@ -69,7 +69,7 @@ export default defineConfig({
           include: ['tests/e2e/**/*.test.ts'],
           setupFiles: [noise],
           globalSetup: [database, build],
-          fileParallelism: false,
+          maxWorkers: 2, // journeys wait more than they work
           sequence: { groupOrder: 2 },
           retry: 1, // a browser on a busy machine may miss its moment once, not twice
           testTimeout: 240_000,

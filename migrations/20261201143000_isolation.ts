@@ -31,7 +31,7 @@ export async function up(knex: Knex): Promise<void> {
     create policy isolation_ingest on isolation to wakeline_ingest using (true) with check (true);
     grant select, insert, update on isolation to wakeline_app;
     grant select on isolation to wakeline_ingest;
-    grant usage on sequence isolation_id_seq to wakeline_app;
+    grant usage on all sequences in schema public to wakeline_app, wakeline_ingest;
   `);
 }
 

@@ -68,7 +68,10 @@ describe('the first day of a site', () => {
 
   it('begins with every unit unheard, and with the caution', async () => {
     await roll.goto(`${site.url}/commissioning`);
-    await roll.getByRole('link', { name: 'Go to the roll call' }).click();
+    await roll
+      .getByRole('link', { name: /^Roll call/ })
+      .first()
+      .click();
     await roll.waitForURL(/roll-call$/);
     expect(await heading(roll)).toBe('None of 184 units has answered the roll call');
     expect(await roll.getByRole('complementary', { name: 'Safety caution' }).innerText()).toContain(

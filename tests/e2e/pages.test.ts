@@ -195,6 +195,105 @@ const PAGES: readonly Shown[] = [
     file: 'shared/[token].astro',
     status: 404,
   },
+  {
+    name: 'a site on its way',
+    role: 'manager',
+    path: () => `/commissioning/${refOf(HALL)}`,
+    file: 'commissioning/[site]/index.astro',
+  },
+  {
+    name: 'the as-built',
+    role: 'technician',
+    path: () => `/commissioning/${refOf(HALL)}/as-built`,
+    file: 'commissioning/[site]/as-built.astro',
+  },
+  {
+    name: 'install checks',
+    role: 'technician',
+    path: () => `/commissioning/${refOf(HALL)}/checks`,
+    file: 'commissioning/[site]/checks.astro',
+  },
+  {
+    name: 'meter readings',
+    role: 'technician',
+    path: () => `/commissioning/${refOf(HALL)}/readings`,
+    file: 'commissioning/[site]/readings.astro',
+  },
+  {
+    name: 'who changed what',
+    role: 'technician',
+    path: () => `/commissioning/${refOf(HALL)}/history`,
+    file: 'commissioning/[site]/history.astro',
+  },
+  {
+    name: 'serials from a file',
+    role: 'technician',
+    path: () => `/commissioning/${refOf(HALL)}/import`,
+    file: 'commissioning/[site]/import.astro',
+  },
+  {
+    name: 'serials on the roof',
+    role: 'technician',
+    path: () => `/commissioning/${refOf(HALL)}/serials`,
+    file: 'commissioning/[site]/serials.astro',
+  },
+  {
+    name: 'the roof plan',
+    role: 'technician',
+    path: () => `/commissioning/${refOf(HALL)}/roof`,
+    file: 'commissioning/[site]/roof.astro',
+  },
+  {
+    name: 'the handover',
+    role: 'technician',
+    path: () => `/commissioning/${refOf(HALL)}/handover`,
+    file: 'commissioning/[site]/handover.astro',
+  },
+  {
+    name: 'shutdown tests',
+    role: 'technician',
+    path: () => `/commissioning/${refOf(HALL)}/shutdown-test`,
+    file: 'commissioning/[site]/shutdown-test/index.astro',
+  },
+  {
+    name: 'a new site',
+    role: 'technician',
+    path: () => '/commissioning/new',
+    file: 'commissioning/new.astro',
+  },
+  {
+    name: 'the phone',
+    role: 'technician',
+    path: () => `/capture/${refOf(HALL)}`,
+    file: 'capture/[site].astro',
+  },
+  { name: 'the phone without a site', role: null, path: () => '/capture', file: 'capture/index.astro' },
+  { name: 'people', role: 'manager', path: () => '/people', file: 'people.astro' },
+  { name: 'who did what', role: 'manager', path: () => '/audit', file: 'audit.astro' },
+  { name: 'letters', role: 'manager', path: () => '/mail', file: 'mail.astro' },
+  { name: 'an account', role: 'analyst', path: () => '/account', file: 'account.astro' },
+  { name: 'the account of an owner', role: 'customer', path: () => '/account', file: 'account.astro' },
+  { name: 'a forgotten password', role: null, path: () => '/forgot-password', file: 'forgot-password.astro' },
+  {
+    name: 'an invitation that is over',
+    role: null,
+    path: () => `/invitation/${newToken()}`,
+    file: 'invitation/[token].astro',
+    status: 404,
+  },
+  {
+    name: 'a password link that is over',
+    role: null,
+    path: () => `/new-password/${newToken()}`,
+    file: 'new-password/[token].astro',
+    status: 404,
+  },
+  {
+    name: 'an address to confirm',
+    role: null,
+    path: () => `/confirm-email/${newToken()}`,
+    file: 'confirm-email/[token].astro',
+  },
   { name: 'sign-in', role: null, path: () => '/sign-in', file: 'sign-in.astro' },
   { name: 'nothing here', role: 'analyst', path: () => '/nothing-here', file: '404.astro', status: 404 },
   {
@@ -245,6 +344,10 @@ describe('on a phone and a desk, in light and dark', () => {
 });
 
 it('no page is left out', () => {
-  const pages = ROUTES.filter((r) => r.file.endsWith('.astro') && r.file !== '500.astro').map((r) => r.file);
+  // a fault has no page to look at; a shutdown test is looked at in its own journey, which has made one
+  const elsewhere = ['500.astro', 'commissioning/[site]/shutdown-test/[test].astro'];
+  const pages = ROUTES.filter((r) => r.file.endsWith('.astro') && !elsewhere.includes(r.file)).map(
+    (r) => r.file,
+  );
   expect([...new Set(PAGES.map((p) => p.file))].sort()).toEqual([...new Set(pages)].sort());
 });

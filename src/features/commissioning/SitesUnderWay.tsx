@@ -54,7 +54,7 @@ function Blocks({ site }: { site: SiteSteps }) {
                 {' '}
                 <a
                   href={`${paths.commissioningSite(site.id)}#step-${step.key}`}
-                  className="text-petrol hover:underline"
+                  className="text-petrol underline underline-offset-[3px]"
                 >
                   And {counted(more, 'more point')} of {STEP_NAMES[step.key].toLowerCase()}
                 </a>
@@ -118,7 +118,10 @@ function Site({ site, at }: { site: SiteSteps; at: string }) {
             <div>
               <dt className="sr-only">Roll call</dt>
               <dd>
-                <a href={paths.rollCall(site.id)} className="font-medium text-petrol hover:underline">
+                <a
+                  href={paths.rollCall(site.id)}
+                  className="font-medium text-petrol underline underline-offset-[3px]"
+                >
                   The roll call is running
                 </a>
               </dd>

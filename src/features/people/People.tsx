@@ -130,7 +130,7 @@ export function People({ initial, view: initialView, timeZone }: Props) {
     },
     {
       key: 'do',
-      label: '',
+      label: 'Change',
       numeric: true,
       cell: (p) => (
         <span className="flex flex-wrap justify-end gap-2">

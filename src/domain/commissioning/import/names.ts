@@ -57,7 +57,7 @@ export class NameBook {
   find(text: string): string | undefined {
     if (this.seen.has(text)) return this.seen.get(text);
     const bare = bareName(text);
-    const meant = this.meanings[bare];
+    const meant = Object.hasOwn(this.meanings, bare) ? this.meanings[bare] : undefined;
     const found =
       this.byBare.get(bare) ?? (meant === undefined ? undefined : this.byBare.get(bareName(meant)));
     this.seen.set(text, found);
