@@ -317,6 +317,7 @@ async function faultsOf(page: Page, shown: Shown): Promise<string[]> {
   const response = await page.goto(site.url + shown.path(), { waitUntil: 'load' });
   if (response?.status() !== (shown.status ?? 200)) faults.push(`status ${response?.status()}`);
   await hydrated(page); // without a word in the console
+  await page.locator('h1').first().waitFor(); // what a phone keeps is read from its store first
   const headings = await page.locator('h1').count();
   if (headings !== 1) faults.push(`${headings} headings of the first level`);
   for (const look of LOOKS) {

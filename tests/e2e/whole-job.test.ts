@@ -235,7 +235,7 @@ describe('a new site on one phone', { timeout: 240_000 }, () => {
     await page.getByLabel('I have read this').check();
     await button('Accept and go on').tap();
     await button('Start watching').tap();
-    await page.getByText('Reports of the strings arrive.').waitFor();
+    await page.getByText('Reports of the strings arrive.').waitFor({ timeout: 90_000 }); // they come once a minute
     for (const string of STRINGS) await meter(string, 'before');
     await operate(true);
     await button(/^Initiator operated now/).tap();

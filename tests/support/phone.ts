@@ -1,4 +1,5 @@
 import type { Browser, BrowserContext, Page } from 'playwright-core';
+import { hydrated } from './browser';
 import { PASSWORD } from './fleet';
 import { signInAt } from './server';
 
@@ -38,6 +39,7 @@ export async function openCapture(page: Page, url: string, site: string, more = 
 
 /** Types on the number pad that stands open. */
 export async function press(page: Page, text: string): Promise<void> {
+  await hydrated(page); // a key that is pressed before is nobody's
   const pad = page.getByRole('group', { name: 'Number pad' });
   for (const key of text)
     await pad.getByRole('button', { name: key === '.' ? 'Decimal point' : key, exact: true }).tap();

@@ -35,8 +35,14 @@ export function Serials({ initial, person, string: first }: Props) {
       '',
   );
   const string = strings.find((s) => s.id === stringId) ?? strings[0];
-  const [position, setPosition] = useState(() => (string ? (nextGap(string, 0) ?? 1) : 1));
-  const [typed, setTyped] = useState('');
+  // until somebody chooses or types, the first gap: what waits on this phone fills some of them after a reload
+  const [chosen, setChosen] = useState<number | null>(null);
+  const position = chosen ?? (string ? (nextGap(string, 0) ?? 1) : 1);
+  const [typed, setTypedText] = useState('');
+  const setTyped = (text: string) => {
+    setChosen(position);
+    setTypedText(text);
+  };
   const [judged, setJudged] = useState<Judged | null>(null);
   const [camera, setCamera] = useState(false);
   const [settings, setSettings] = useSettings();
@@ -57,8 +63,8 @@ export function Serials({ initial, person, string: first }: Props) {
       address.searchParams.set('string', to.string);
       window.history.replaceState(null, '', address);
     }
-    setPosition(to.position);
-    setTyped('');
+    setChosen(to.position);
+    setTypedText('');
     setJudged(null);
   }, []);
   useEffect(() => {
