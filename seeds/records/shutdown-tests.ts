@@ -158,7 +158,7 @@ class Zone {
     return { id: randomUUID(), at, recordedAt: at, person: this.signer.name, act };
   }
 
-  private planned(facts: TestFacts, strings: string[], rounds: (string | null)[], atS: number): KeptAct[] {
+  private planned(strings: string[], rounds: (string | null)[], atS: number): KeptAct[] {
     const year = new Date(atS * 1000).getUTCFullYear();
     const calibrated = `${year}-02-11`;
     const before = new Date(atS * 1000).toISOString().slice(0, 10) < calibrated;
@@ -189,7 +189,6 @@ class Zone {
     await this.draft(
       atS - 960,
       this.planned(
-        facts,
         facts.strings.map((s) => s.id),
         roundsOf(facts, facts.strings),
         atS,
@@ -204,7 +203,6 @@ class Zone {
     const rounds = roundsOf(facts, tested);
     const volts = await vocOf(this.db, this.zoneId);
     const acts = this.planned(
-      facts,
       tested.map((s) => s.id),
       rounds,
       atS,

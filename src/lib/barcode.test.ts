@@ -8,9 +8,7 @@ import { shippedDecoder, type Decoder } from './barcode';
 let decoder: Decoder;
 beforeAll(async () => {
   const file = await readFile(createRequire(import.meta.url).resolve('zxing-wasm/reader/zxing_reader.wasm'));
-  decoder = await shippedDecoder(
-    file.buffer.slice(file.byteOffset, file.byteOffset + file.byteLength),
-  );
+  decoder = await shippedDecoder(file.buffer.slice(file.byteOffset, file.byteOffset + file.byteLength));
 });
 
 /** A drawn code on a sheet, as a camera would see it: turned a little, on grey, with noise around it. */
