@@ -58,6 +58,7 @@ export default defineConfig({
         test: {
           name: 'access',
           include: ['tests/access/**/*.test.ts'],
+          sequence: { groupOrder: 2 },
           setupFiles: [noise],
           globalSetup: [database, build],
         },
@@ -69,7 +70,6 @@ export default defineConfig({
           include: ['tests/e2e/**/*.test.ts'],
           setupFiles: [noise],
           globalSetup: [database, build],
-          maxWorkers: 2, // journeys wait more than they work
           sequence: { groupOrder: 2 },
           retry: 1, // a browser on a busy machine may miss its moment once, not twice
           testTimeout: 240_000,
