@@ -123,4 +123,4 @@ export async function test() {
 }
 
 /** The quick half, for the desk: no database, no browser. */
-export const check = () => sum([...staticSteps, () => vitest(['architecture', 'unit'])]);
+export const check = () => sum([staticChecks, () => vitest(['architecture', 'unit'])]);
