@@ -150,7 +150,7 @@ export const ROUTES: readonly Route[] = [
     permission: 'roll_call.run',
     of: 'site',
     path: (t) => `/api/sites/${t.site}/isolation/stop`,
-    served: [409],
+    served: [200, 409],
   },
   {
     file: 'api/sites/[site]/roll-call/place.ts',
