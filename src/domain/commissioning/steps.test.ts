@@ -24,7 +24,7 @@ const string = (change: Partial<StringFacts> = {}): StringFacts => ({
 const facts = (change: Partial<CommissioningFacts> = {}): CommissioningFacts => ({
   stage: 'commissioning',
   strings: [string()],
-  zones: [{ name: 'South roof', test: 'passed' }],
+  zones: [{ name: 'South roof', test: 'passed', untested: [] }],
   heardUnknown: 0,
   rollCallRunning: false,
   rollCallStarted: true,
@@ -64,10 +64,20 @@ describe('the steps of a site', () => {
 
   it('take telemetry alone for no pass', () => {
     for (const test of ['consistent', 'not_witnessed', 'failed'] as const)
-      expect(gapsOf({ zones: [{ name: 'South roof', test }] })).toEqual(['shutdown_test/test:South roof']);
-    expect(gapsOf({ zones: [{ name: 'South roof', test: null }] })).toEqual([
+      expect(gapsOf({ zones: [{ name: 'South roof', test, untested: [] }] })).toEqual([
+        'shutdown_test/test:South roof',
+      ]);
+    expect(gapsOf({ zones: [{ name: 'South roof', test: null, untested: [] }] })).toEqual([
       'shutdown_test/untested:South roof',
     ]);
+  });
+
+  it('take a test of some strings for no test of the others', () => {
+    const zones = [{ name: 'South roof', test: 'passed' as const, untested: ['B4'] }];
+    expect(gapsOf({ zones })).toEqual(['shutdown_test/untested:South roof']);
+    expect(commissioningSteps(facts({ zones })).find((s) => s.key === 'shutdown_test')?.state).toBe(
+      'under_way',
+    );
   });
 
   it('leave the roll call out where no unit answers one', () => {
@@ -79,8 +89,12 @@ describe('the steps of a site', () => {
   });
 
   it('ask for no shutdown test where the rule set asks for none', () => {
-    expect(gapsOf({ ruleSet: 'none', zones: [{ name: 'South roof', test: null }] })).toEqual([]);
-    expect(gapsOf({ ruleSet: 'none', zones: [{ name: 'South roof', test: 'failed' }] })).toHaveLength(1);
+    expect(gapsOf({ ruleSet: 'none', zones: [{ name: 'South roof', test: null, untested: [] }] })).toEqual(
+      [],
+    );
+    expect(
+      gapsOf({ ruleSet: 'none', zones: [{ name: 'South roof', test: 'failed', untested: [] }] }),
+    ).toHaveLength(1);
   });
 
   it('keep an accepted gap in view, and let it block no more', () => {

@@ -33,8 +33,10 @@ export interface StringFacts {
 
 export interface ZoneFacts {
   name: string;
-  /** Newest signed test that nothing supersedes. */
+  /** Worst result in force over its strings; null: no string has one. */
   test: 'passed' | 'failed' | 'consistent' | 'not_witnessed' | null;
+  /** Strings without a result in force. */
+  untested: readonly string[];
 }
 
 export interface CommissioningFacts {
@@ -185,14 +187,19 @@ const TEST_WORDS = {
 function shutdownTest({ zones, ruleSet }: CommissioningFacts): Draft {
   if (ruleSet === 'none' && zones.every((z) => z.test === null))
     return { state: 'done', words: 'none asked by the rule set', gaps: [] };
-  const passed = zones.filter((z) => z.test === 'passed');
-  const gaps = zones
-    .filter((z) => z.test !== 'passed')
-    .map((z) =>
-      z.test === null || z.test === 'passed'
-        ? { key: `untested:${z.name}`, words: `${z.name} has no signed shutdown test.` }
-        : { key: `test:${z.name}`, words: `${z.name} ${TEST_WORDS[z.test]}.` },
-    );
+  const passed = zones.filter((z) => z.test === 'passed' && z.untested.length === 0);
+  const gaps = zones.flatMap((z) => {
+    if (z.test === null)
+      return [{ key: `untested:${z.name}`, words: `${z.name} has no signed shutdown test.` }];
+    const open: Draft['gaps'] = [];
+    if (z.test !== 'passed') open.push({ key: `test:${z.name}`, words: `${z.name} ${TEST_WORDS[z.test]}.` });
+    if (z.untested.length > 0)
+      open.push({
+        key: `untested:${z.name}`,
+        words: `${z.name}: ${named(z.untested)} ${z.untested.length === 1 ? 'has' : 'have'} no signed shutdown test.`,
+      });
+    return open;
+  });
   const begun = zones.some((z) => z.test !== null);
   return {
     state: !begun ? 'not_started' : gaps.length === 0 ? 'done' : 'under_way',

@@ -1,7 +1,8 @@
-import type { CommissioningFacts, StringFacts, ZoneFacts } from '../../domain/commissioning/steps';
+import type { CommissioningFacts, StringFacts } from '../../domain/commissioning/steps';
 import type { Tx } from '../db/transaction';
+import { shutdownTestStanding } from './shutdown-tests';
 
-/** Facts of sites under way, as the steps count them: one statement for any number of sites. */
+/** Facts of sites under way, as the steps count them. */
 
 interface StringRow extends Omit<StringFacts, 'failedChecks'> {
   siteId: number;
@@ -16,7 +17,6 @@ interface SiteRow {
   rollCallStarted: boolean;
   accepted: string[] | null;
   packs: number;
-  zones: ZoneFacts[] | null;
 }
 
 async function stringFacts(tx: Tx, siteIds: readonly number[]): Promise<StringRow[]> {
@@ -71,13 +71,7 @@ async function siteFacts(tx: Tx, siteIds: readonly number[]): Promise<SiteRow[]>
             exists (select from roll_call r where r.site_id = s.id) as "rollCallStarted",
             exists (select from roll_call r where r.site_id = s.id and r.stopped_at is null) as "rollCallRunning",
             (select array_agg(g.gap) from accepted_gap g where g.site_id = s.id) as accepted,
-            (select coalesce(max(version), 0) from handover_pack h where h.site_id = s.id)::int as packs,
-            (select jsonb_agg(jsonb_build_object('name', z.name, 'test', t.result) order by z.name)
-             from zone z left join lateral (
-               select result from shutdown_test t
-               where t.site_id = s.id and (t.zone_id = z.id or t.zone_id is null) and t.superseded_by is null
-               order by t.at desc limit 1) t on true
-             where z.site_id = s.id) as zones
+            (select coalesce(max(version), 0) from handover_pack h where h.site_id = s.id)::int as packs
      from site s where s.id = any(:siteIds)`,
     { siteIds },
   );
@@ -92,12 +86,16 @@ export async function commissioningFacts(
   const strings = new Map<number, StringFacts[]>(siteIds.map((id) => [id, []]));
   for (const { siteId, failedChecks, ...facts } of await stringFacts(tx, siteIds))
     strings.get(siteId)?.push({ ...facts, failedChecks: failedChecks ?? [] });
-  return new Map(
-    (await siteFacts(tx, siteIds)).map(({ siteId, accepted, zones, ...site }) => [
-      siteId,
-      { ...site, accepted: accepted ?? [], zones: zones ?? [], strings: strings.get(siteId) ?? [] },
-    ]),
-  );
+  const facts = new Map<number, CommissioningFacts>();
+  for (const { siteId, accepted, ...site } of await siteFacts(tx, siteIds)) {
+    const zones = (await shutdownTestStanding(tx, siteId)).map(({ zone, result, untested }) => ({
+      name: zone.name,
+      test: result,
+      untested,
+    }));
+    facts.set(siteId, { ...site, accepted: accepted ?? [], zones, strings: strings.get(siteId) ?? [] });
+  }
+  return facts;
 }
 
 export interface LastHand {
