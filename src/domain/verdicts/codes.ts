@@ -62,6 +62,16 @@ export const EVENT_KINDS = [
   'roll_call_stopped',
   'roster_changed',
   'hazard_acknowledged', // detail: {key, headline, person}
+  'cause_opened', // detail: {cause, kind, headline, hazard, units}
+  'cause_changed', // detail: as above, and {before: {headline, units}}
+  'cause_closed', // detail: {cause, kind, headline, lossWh}
+  'cause_reopened',
+  'case_opened', // detail: {case, number, title, origin, person}
+  'case_assigned', // detail: {case, number, title, person, assignee, assigneeId}
+  'case_mentioned', // detail: {case, number, title, person, mentions: person ids, body}
+  'case_closed', // detail: {case, number, title, person, state}
+  'case_reopened', // detail: {case, number, title, reason}
+  'planned_work', // detail: {work, reason, startsAt, endsAt, person}
 ] as const;
 export type EventKind = (typeof EVENT_KINDS)[number];
 

@@ -29,6 +29,16 @@ export const KIND_WORDS: Record<EventKind, string> = {
   roll_call_stopped: 'Roll call stopped',
   roster_changed: 'Roster changed',
   hazard_acknowledged: 'Hazard taken on',
+  cause_opened: 'Cause found',
+  cause_changed: 'Cause changed',
+  cause_closed: 'Cause over',
+  cause_reopened: 'Cause is back',
+  case_opened: 'Case opened',
+  case_assigned: 'Case assigned',
+  case_mentioned: 'Mentioned in a case',
+  case_closed: 'Case closed',
+  case_reopened: 'Case reopened',
+  planned_work: 'Planned work',
 };
 /** The kinds to choose among, by their words. */
 export const KINDS = EVENT_KINDS.map((value) => ({ value, label: KIND_WORDS[value] })).sort((a, b) =>
@@ -148,5 +158,32 @@ export function eventWords(kind: EventKind, detail: Detail): EventWords {
         words: `${text(detail, 'person') || 'Somebody'} took on: ${text(detail, 'headline') || 'a hazard'}`,
         tone: 'slate',
       };
+    case 'cause_opened':
+    case 'cause_changed':
+    case 'cause_closed':
+    case 'cause_reopened':
+      return {
+        words: `${KIND_WORDS[kind]}: ${text(detail, 'headline')}`,
+        tone: kind === 'cause_closed' ? 'petrol' : detail.hazard === true ? 'crimson' : 'rust',
+      };
+    case 'case_opened':
+    case 'case_assigned':
+    case 'case_mentioned':
+    case 'case_closed':
+    case 'case_reopened':
+      return {
+        words: `Case ${typeof detail.number === 'number' ? detail.number : ''} ${CASE_DID[kind]}${at('person', ' by ')}: ${text(detail, 'title')}`,
+        tone: kind === 'case_closed' ? 'petrol' : kind === 'case_reopened' ? 'rust' : 'slate',
+      };
+    case 'planned_work':
+      return { words: `Planned work: ${text(detail, 'reason')}`, tone: 'slate' };
   }
 }
+
+const CASE_DID = {
+  case_opened: 'opened',
+  case_assigned: 'assigned',
+  case_mentioned: 'commented on',
+  case_closed: 'closed',
+  case_reopened: 'reopened',
+} as const;
