@@ -7,4 +7,5 @@ export interface ShellActor {
   role: Role;
 }
 export type Theme = 'system' | 'light' | 'dark';
-export type StaffNav = 'fleet' | 'commissioning' | 'shutdown' | 'equipment' | 'people' | null;
+export type StaffNav =
+  'fleet' | 'causes' | 'cases' | 'figures' | 'commissioning' | 'shutdown' | 'equipment' | 'people' | null;
