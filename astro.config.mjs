@@ -13,5 +13,6 @@ export default defineConfig({
   integrations: [react(), tailwind({ applyBaseStyles: false })],
   server: { host: process.env.HOST || '127.0.0.1', port: Number(process.env.PORT || 4321) },
   devToolbar: { enabled: false },
-  vite: { ssr: { noExternal: ['echarts-for-react'] } },
+  // scripts are files: the browser runs no inline one but those that server/http/inline-scripts names
+  vite: { build: { assetsInlineLimit: 0 }, ssr: { noExternal: ['echarts-for-react'] } },
 });

@@ -1,18 +1,24 @@
 import { randomUUID } from 'node:crypto';
 import { defineMiddleware } from 'astro:middleware';
 import { signedInBy } from './server/auth/sessions';
+import { config } from './server/config';
 import { AppError } from './server/errors';
+import { answerHeaders } from './server/http/headers';
 import { sameOrigin } from './server/http/origin';
 import { problem } from './server/http/problem';
 
 const SAFE = new Set(['GET', 'HEAD', 'OPTIONS']);
-const HEADERS = {
-  'x-content-type-options': 'nosniff',
-  'referrer-policy': 'same-origin',
-  'permissions-policy': 'camera=(self), geolocation=(), microphone=(), payment=(), usb=()',
-  'content-security-policy': "frame-ancestors 'none'; base-uri 'self'; form-action 'self'; object-src 'none'",
-  'cross-origin-opener-policy': 'same-origin',
-};
+
+/** What every answer says, refusals of this file included, unless it says so itself. */
+function finish(response: Response, locals: App.Locals): Response {
+  const isPage = response.headers.get('content-type')?.startsWith('text/html') ?? false;
+  const headers = answerHeaders(config(), { isPage, doors: locals.doors, development: import.meta.env.DEV });
+  for (const [name, value] of Object.entries(headers))
+    if (!response.headers.has(name)) response.headers.set(name, value);
+  if (isPage) response.headers.set('cache-control', 'private, no-store');
+  response.headers.set('x-request-id', locals.requestId);
+  return response;
+}
 
 export const onRequest = defineMiddleware(async (context, next) => {
   const { locals, request } = context;
@@ -24,9 +30,12 @@ export const onRequest = defineMiddleware(async (context, next) => {
   locals.sessionId = null;
   if (context.isPrerendered) return next();
   if (!SAFE.has(request.method) && !sameOrigin(request.headers))
-    return problem(
-      new AppError('forbidden', { message: 'The request came from another site.' }),
-      locals.requestId,
+    return finish(
+      problem(
+        new AppError('forbidden', { message: 'The request came from another site.' }),
+        locals.requestId,
+      ),
+      locals,
     );
 
   let cookies: string[] = [];
@@ -36,20 +45,15 @@ export const onRequest = defineMiddleware(async (context, next) => {
     if ('actor' in found)
       Object.assign(locals, { actor: found.actor, viewer: found.viewer, sessionId: found.sessionId });
   } catch (error) {
-    if (context.url.pathname.startsWith('/api/')) return problem(error, locals.requestId);
+    if (context.url.pathname.startsWith('/api/')) return finish(problem(error, locals.requestId), locals);
     locals.problem = {
       status: 503,
       title: 'Not reachable just now',
       message: 'The database does not answer, so Wakeline cannot tell who you are. Try again in a minute.',
     };
-    return context.rewrite('/problem');
+    return finish(await context.rewrite('/problem'), locals);
   }
-  const response = await next();
-  for (const [name, value] of Object.entries(HEADERS))
-    if (!response.headers.has(name)) response.headers.set(name, value);
-  if (response.headers.get('content-type')?.startsWith('text/html'))
-    response.headers.set('cache-control', 'private, no-store');
-  response.headers.set('x-request-id', locals.requestId);
+  const response = finish(await next(), locals);
   for (const cookie of cookies) response.headers.append('set-cookie', cookie);
   return response;
 });

@@ -31,10 +31,12 @@ const settings = z.object({
   /** Certificate (with its chain) and key as PEM files: then the site speaks HTTPS itself. Read again as they change. */
   TLS_CERT: z.string().optional(),
   TLS_KEY: z.string().optional(),
-  /** 1: cookies only over HTTPS. Set it wherever a proxy serves the site by HTTPS; TLS_CERT implies it. */
+  /** 1: cookies only over HTTPS, for a proxy that serves the site so. TLS_CERT or a PUBLIC_URL of https:// implies it. */
   COOKIE_SECURE: flag,
   /** 1: a reverse proxy stands in front and its x-forwarded-* headers are true. */
   TRUST_PROXY: flag,
+  /** Seconds for which browsers shall reach this host by HTTPS only. Unset: the header is not sent. */
+  HSTS_MAX_AGE_S: z.coerce.number().int().min(0).max(63_072_000).optional(),
   LOG_LEVEL: z.enum(['silent', 'error', 'warn', 'info', 'debug']).default('info'),
   /** The site's address as people reach it, for links in letters. Unset: http(s)://HOST:PORT. */
   PUBLIC_URL: z.url({ protocol: /^https?$/ }).optional(),
@@ -50,6 +52,8 @@ const settings = z.object({
   STUCK_GRACE_S: z.coerce.number().int().min(0).max(3600).optional(),
 });
 
+const isHttps = (address: string | undefined): boolean => address?.startsWith('https:') ?? false;
+
 const schema = settings
   .check(({ value, issues }) => {
     for (const [given, missing] of [
@@ -64,7 +68,10 @@ const schema = settings
           message: `${given} is set: give both, the certificate and its key`,
         });
   })
-  .transform((s) => ({ ...s, COOKIE_SECURE: s.COOKIE_SECURE || s.TLS_CERT !== undefined }));
+  .transform((s) => ({
+    ...s,
+    COOKIE_SECURE: s.COOKIE_SECURE || s.TLS_CERT !== undefined || isHttps(s.PUBLIC_URL),
+  }));
 
 export type Config = Readonly<z.infer<typeof schema>>;
 

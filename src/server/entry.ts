@@ -12,6 +12,7 @@ import type { SSRManifest } from 'astro';
 import sirv from 'sirv';
 import { config } from './config';
 import { ERROR_KINDS } from './errors';
+import { answerHeaders, commonHeaders } from './http/headers';
 import { log } from './log';
 import { refuseUpgrade, routeUpgrade, startRoles, stopRoles } from './roles';
 import { certificateFiles, secureServer } from './tls';
@@ -40,6 +41,7 @@ const REQUEST_MAX_BYTES = 32 * 1024 * 1024;
 function answer(req: IncomingMessage, res: ServerResponse, status: number, message: string): void {
   const api = req.url?.startsWith('/api/');
   res.writeHead(status, {
+    ...answerHeaders(config(), { isPage: false, development: false }),
     'content-type': api ? 'application/problem+json' : 'text/plain; charset=utf-8',
     'cache-control': 'no-store',
     connection: 'close',
@@ -100,12 +102,13 @@ async function startServer(handler: Handler, options: StartOptions): Promise<Run
   const settings = config();
   const isWeb = settings.WAKELINE_ROLES.includes('web');
   endOnUnhandled();
+  const common = Object.entries(commonHeaders(settings));
   const assets = sirv(options.client, {
     gzip: true, // .gz and .br written by the build
     brotli: true,
     dotfiles: false,
     setHeaders: (res, path) => {
-      res.setHeader('X-Content-Type-Options', 'nosniff');
+      for (const [name, value] of common) res.setHeader(name, value);
       if (path.startsWith('/_astro/')) res.setHeader('Cache-Control', 'public, max-age=31536000, immutable');
     },
   });

@@ -4,6 +4,7 @@ import { DELETE } from '../../src/pages/api/share-links/[link]';
 import { GET as READ } from '../../src/pages/api/shared/[token]';
 import { GET as LIST, POST } from '../../src/pages/api/sites/[site]/share-links';
 import {
+  shareLinkBody,
   sharedSite,
   shareLinks,
   type MadeShareLink,
@@ -55,7 +56,7 @@ const make = (more: Partial<ShareLinkBody> = {}, actor = manager, site = CLINIC,
       tx,
       actor,
       fleet.site(site).ref,
-      { label: 'Lobby', kiosk: false, endsOn: null, ...more },
+      { label: 'Lobby', kiosk: false, endsOn: null, framedBy: null, ...more },
       { at, address: '192.0.2.200', origin: 'https://roofs.example' },
     ),
   );
@@ -74,6 +75,29 @@ describe('a link', () => {
     const { rows } = await db.owner.query<{ kept: string }>('select l::text as kept from share_link l');
     expect(rows.map((r) => r.kept).join()).not.toContain(tokenOf(made));
     expect(JSON.stringify(await list())).not.toContain(tokenOf(made));
+  });
+
+  it('of a lobby screen may name one page that shows it in a frame', async () => {
+    const framedBy = 'https://screens.example';
+    const made = await make({ label: 'Framed', kiosk: true, framedBy });
+    expect((await sharedPage(tokenOf(made), AT, somewhere())).framedBy).toBe(framedBy);
+    const body = { label: 'Framed', kiosk: true, endsOn: null };
+    expect(shareLinkBody.parse({ ...body, framedBy: ' https://SCREENS.example/ ' }).framedBy).toBe(framedBy);
+    for (const wrong of [
+      { ...body, kiosk: false, framedBy },
+      ...[
+        'screens.example',
+        'https://screens.example/page',
+        'https://a.example https://b.example',
+        "https://a.example; script-src 'unsafe-inline'",
+        'https://a.example\r\nset-cookie: x=1',
+        'javascript:alert(1)',
+        "'self'",
+        '*',
+        'https://*.example',
+      ].map((text) => ({ ...body, framedBy: text })),
+    ])
+      expect(shareLinkBody.safeParse(wrong).error?.issues.map((i) => i.path.join('.'))).toEqual(['framedBy']);
   });
 
   it('tells when it was last used, at most every minute', async () => {
@@ -159,7 +183,7 @@ describe('who may', () => {
   it.each(['technician', 'analyst', 'customer'] as const)('%s: none of it', async (role) => {
     const actor = await fleet.actor(`${role}@lowfield.example`);
     const params = { site: fleet.site(CLINIC).ref, link: (await make()).link.id };
-    const body = { label: 'Mine', kiosk: false, endsOn: null };
+    const body = { label: 'Mine', kiosk: false, endsOn: null, framedBy: null };
     expect((await ask(POST, { actor, params, method: 'POST', body })).status).toBe(403);
     expect((await ask(LIST, { actor, params })).status).toBe(403);
     expect((await ask(DELETE, { actor, params, method: 'DELETE' })).status).toBe(403);

@@ -11,9 +11,6 @@ interface Props {
 export function NumberPad({ onKey, doneWords = 'Done', onDone }: Props) {
   return (
     <div role="group" aria-label="Number pad" data-pad className="grid grid-cols-4 gap-1.5 pt-1 lg:hidden">
-      <noscript>
-        <style>{'[data-pad]{display:none}'}</style>
-      </noscript>
       {DIGITS.map((digit, i) => (
         <button
           key={digit}

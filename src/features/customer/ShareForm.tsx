@@ -18,10 +18,11 @@ const FORMS = [
 
 /** What is shared and until when; afterwards the link, this once. */
 export function ShareForm({ busy, fault, made, onSubmit, onClose }: Props) {
-  const [typed, setTyped] = useState<{ label: string; kiosk: boolean; endsOn: string }>({
+  const [typed, setTyped] = useState<{ label: string; kiosk: boolean; endsOn: string; framedBy: string }>({
     label: '',
     kiosk: false,
     endsOn: '',
+    framedBy: '',
   });
   const [copied, setCopied] = useState<'yes' | 'no' | null>(null);
   if (made) {
@@ -58,14 +59,19 @@ export function ShareForm({ busy, fault, made, onSubmit, onClose }: Props) {
     );
   }
   const faultOf = (field: string) => fault?.fault(field) ?? null;
-  const elsewhere = fault && !faultOf('label') && !faultOf('endsOn');
+  const elsewhere = fault && !['label', 'endsOn', 'framedBy'].some(faultOf);
   return (
     <form
       className="grid gap-4"
       noValidate
       onSubmit={(event) => {
         event.preventDefault();
-        onSubmit({ label: typed.label, kiosk: typed.kiosk, endsOn: typed.endsOn || null });
+        onSubmit({
+          label: typed.label,
+          kiosk: typed.kiosk,
+          endsOn: typed.endsOn || null,
+          framedBy: (typed.kiosk && typed.framedBy.trim()) || null,
+        });
       }}
     >
       {elsewhere && (
@@ -107,6 +113,19 @@ export function ShareForm({ busy, fault, made, onSubmit, onClose }: Props) {
         error={faultOf('endsOn')}
         onChange={(event) => setTyped({ ...typed, endsOn: event.target.value })}
       />
+      {typed.kiosk && (
+        <Field
+          label="May stand in a page of"
+          name="framedBy"
+          inputMode="url"
+          autoComplete="off"
+          value={typed.framedBy}
+          maxLength={200}
+          hint="For a lobby screen that shows several pages: the address of its page, as https://screens.example. Empty: no page may show it in a frame."
+          error={faultOf('framedBy')}
+          onChange={(event) => setTyped({ ...typed, framedBy: event.target.value })}
+        />
+      )}
       <div>
         <Button type="submit" weight="primary" disabled={busy}>
           Make the link

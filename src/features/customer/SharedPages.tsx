@@ -69,7 +69,8 @@ export function SharedPages({
           {link.label} {link.kiosk && <Tag tone="outline">lobby screen</Tag>}
         </p>
         <p className="text-sm text-ink-2">
-          {untilWords(link, timeZone)} · made by {link.madeBy}, {longDate(link.createdAt, timeZone)} ·{' '}
+          {untilWords(link, timeZone)} · {link.framedBy && `in a frame of ${link.framedBy} · `} made by{' '}
+          {link.madeBy}, {longDate(link.createdAt, timeZone)} ·{' '}
           {link.lastUsedAt ? (
             <>
               last used <RelativeTime at={link.lastUsedAt} now={page.at} timeZone={timeZone} />

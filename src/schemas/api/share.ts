@@ -21,6 +21,8 @@ export const sharedSite = z.strictObject({
   timeZone: z.string(),
   organisation: z.string(),
   kiosk: z.boolean(),
+  /** The page that may show a lobby screen in a frame, by its origin. */
+  framedBy: z.string().nullable(),
   now: sharedNow,
   today: customerSite.shape.today,
   month: customerSite.shape.month,
@@ -34,6 +36,7 @@ export const shareLinkItem = z.object({
   id,
   label: z.string(),
   kiosk: z.boolean(),
+  framedBy: z.string().nullable(),
   madeBy: z.string(),
   createdAt: time,
   expiresAt: time.nullable(), // null: until it is ended
@@ -46,12 +49,32 @@ export type ShareLinkItem = z.infer<typeof shareLinkItem>;
 export const shareLinks = z.object({ at: time, timeZone: z.string(), links: z.array(shareLinkItem) });
 export type ShareLinks = z.infer<typeof shareLinks>;
 
-export const shareLinkBody = z.strictObject({
-  label: z.string().trim().min(1, 'A label is missing.').max(80, 'At most 80 characters.'),
-  kiosk: z.boolean(),
-  /** The last day on which it works, at the site; null: until somebody ends it. */
-  endsOn: z.iso.date('Give a day, or leave it empty.').nullable(),
-});
+const ORIGIN = 'Give scheme and host as https://screens.example, without a path, or leave it empty.';
+/** scheme://host or scheme://host:port as browsers write it, so that nothing else gets into a header. */
+const origin = z
+  .string()
+  .trim()
+  .max(200, 'At most 200 characters.')
+  .transform((text) => text.replace(/\/$/, '').toLowerCase())
+  .refine(
+    (text) =>
+      /^https?:\/\/[a-z0-9.:[\]-]+$/.test(text) && URL.canParse(text) && new URL(text).origin === text,
+    ORIGIN,
+  );
+
+export const shareLinkBody = z
+  .strictObject({
+    label: z.string().trim().min(1, 'A label is missing.').max(80, 'At most 80 characters.'),
+    kiosk: z.boolean(),
+    /** The last day on which it works, at the site; null: until somebody ends it. */
+    endsOn: z.iso.date('Give a day, or leave it empty.').nullable(),
+    /** Of a lobby screen: the origin of a page that may show it in a frame; null: none may. */
+    framedBy: origin.nullable().default(null),
+  })
+  .refine((body) => body.kiosk || body.framedBy === null, {
+    path: ['framedBy'],
+    message: 'Only a lobby screen may stand in a frame.',
+  });
 export type ShareLinkBody = z.infer<typeof shareLinkBody>;
 
 /** A link that was just made; its address is told this once. */

@@ -9,13 +9,14 @@ export interface ShareLinkRow {
   siteId: number;
   label: string;
   kiosk: boolean;
+  framedBy: string | null;
   madeBy: string;
   createdAt: Date;
   expiresAt: Date | null;
   endedAt: Date | null;
   lastUsedAt: Date | null;
 }
-const COLUMNS = `l.id, l.ref, l.site_id as "siteId", l.label, l.kiosk, p.name as "madeBy", l.created_at as "createdAt",
+const COLUMNS = `l.id, l.ref, l.site_id as "siteId", l.label, l.kiosk, l.framed_by as "framedBy", p.name as "madeBy", l.created_at as "createdAt",
   l.expires_at as "expiresAt", l.ended_at as "endedAt", l.last_used_at as "lastUsedAt"`;
 
 /** The links of a site that was found as the actor: those that work first, the newest first among them. */
@@ -45,6 +46,7 @@ export async function addShareLink(
     siteId: number;
     label: string;
     kiosk: boolean;
+    framedBy: string | null;
     hash: Buffer;
     createdBy: number;
     at: Date;
@@ -53,8 +55,8 @@ export async function addShareLink(
 ): Promise<ShareLinkRow> {
   const { rows } = await tx.raw<{ rows: ShareLinkRow[] }>(
     `with l as (
-       insert into share_link (site_id, label, kiosk, token_hash, created_by, created_at, expires_at)
-       values (:siteId, :label, :kiosk, :hash, :createdBy, :at, :expiresAt) returning *)
+       insert into share_link (site_id, label, kiosk, framed_by, token_hash, created_by, created_at, expires_at)
+       values (:siteId, :label, :kiosk, :framedBy, :hash, :createdBy, :at, :expiresAt) returning *)
      select ${COLUMNS} from l join person p on p.id = l.created_by`,
     link,
   );
@@ -82,6 +84,7 @@ export interface OpenShareLink {
   siteId: number;
   organisationId: number;
   kiosk: boolean;
+  framedBy: string | null;
 }
 
 /**
@@ -91,12 +94,12 @@ export interface OpenShareLink {
 export async function openShareLink(tx: Tx, hash: Buffer, at: Date): Promise<OpenShareLink | undefined> {
   const { rows } = await tx.raw<{ rows: OpenShareLink[] }>(
     `with l as (
-       select id, site_id, kiosk, created_by from share_link
+       select id, site_id, kiosk, framed_by, created_by from share_link
        where token_hash = :hash and ended_at is null and (expires_at is null or expires_at > :at)),
      used as (
        update share_link set last_used_at = :at
        where id = (select id from l) and (last_used_at is null or last_used_at < cast(:at as timestamptz) - interval '1 minute'))
-     select l.id, l.site_id as "siteId", l.kiosk, p.organisation_id as "organisationId"
+     select l.id, l.site_id as "siteId", l.kiosk, l.framed_by as "framedBy", p.organisation_id as "organisationId"
      from l join person p on p.id = l.created_by`,
     { hash, at },
   );

@@ -31,6 +31,7 @@ const item = (link: ShareLinkRow, at: Date): ShareLinkItem => ({
   id: link.ref,
   label: link.label,
   kiosk: link.kiosk,
+  framedBy: link.framedBy,
   madeBy: link.madeBy,
   createdAt: link.createdAt.toISOString(),
   expiresAt: link.expiresAt?.toISOString() ?? null,
@@ -72,6 +73,7 @@ export async function makeShareLink(
     siteId: site.id,
     label: wanted.label,
     kiosk: wanted.kiosk,
+    framedBy: wanted.framedBy,
     hash: tokenHash(token),
     createdBy: actor.personId,
     at: from.at,
@@ -84,7 +86,7 @@ export async function makeShareLink(
     action: 'share.made',
     subject: `shared page “${link.label}”`,
     siteId: site.id,
-    after: { label: link.label, kiosk: link.kiosk, endsOn: wanted.endsOn },
+    after: { label: link.label, kiosk: link.kiosk, endsOn: wanted.endsOn, framedBy: wanted.framedBy },
   });
   return { link: item(link, from.at), address: `${from.origin}${paths.shared(token)}` };
 }
@@ -144,6 +146,7 @@ export async function sharedPage(token: string, at: Date, address: string): Prom
       timeZone: site.timeZone,
       organisation: care.organisation,
       kiosk: link.kiosk,
+      framedBy: link.framedBy,
       now: { ...now, commands: now.commands.map(({ inForce, since }) => ({ inForce, since })) },
       today,
       month,
