@@ -19,6 +19,12 @@ export async function openChecks(page: Page, { url, site }: Journey, string: str
   await hydrated(page);
 }
 
+/** Waits until a note stands in the record: not in the field where it was typed, which goes when the save is done. */
+async function recorded(check: Locator, note: string): Promise<void> {
+  await check.getByLabel('Note').waitFor({ state: 'detached' });
+  await check.getByRole('paragraph').filter({ hasText: note }).waitFor();
+}
+
 /** Both open the same check; the second is told what the first recorded, keeps what was typed, and saves it in its place. */
 export async function meetAtOneCheck(
   page: Page,
@@ -38,14 +44,14 @@ export async function meetAtOneCheck(
     await item(who, 'strain_relief').getByLabel('Note').fill(note);
   }
   await item(other, 'strain_relief').getByRole('button', { name: 'Save the check' }).click();
-  await item(other, 'strain_relief').getByText('seen from the ladder').waitFor();
+  await recorded(item(other, 'strain_relief'), 'seen from the ladder');
   await item(page, 'strain_relief').getByRole('button', { name: 'Save the check' }).click();
   const notice = item(page, 'strain_relief').getByRole('status').filter({ hasText: 'meanwhile' });
   await notice.waitFor();
   const told = await notice.innerText();
   await journey.look(page, 'two people at one check');
   await item(page, 'strain_relief').getByRole('button', { name: 'Save mine in place of theirs' }).click();
-  await item(page, 'strain_relief').getByText('one clip added', { exact: true }).waitFor();
+  await recorded(item(page, 'strain_relief'), 'one clip added');
   return { told };
 }
 

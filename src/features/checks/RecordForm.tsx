@@ -40,6 +40,8 @@ export function RecordForm({ sheet, row, cell, onSaved, onCancel }: Props) {
   const [refused, setRefused] = useState<ApiError | null>(null);
   const [theirs, setTheirs] = useState<CheckRecord | null>(null);
   const ref = useRef(newRef());
+  // the sheet is read anew while this stands open: only what was on the screen is superseded unasked
+  const [seen] = useState(record?.ref ?? null);
   const noteId = useId();
   const [openedS] = useState(() => Date.now() / 1000);
   const { figures, faults, judged } = filled(check, result, typed, row.context, openedS);
@@ -81,7 +83,7 @@ export function RecordForm({ sheet, row, cell, onSaved, onCancel }: Props) {
       className="mt-3 space-y-3 border-t border-rule-faint pt-3"
       onSubmit={(event) => {
         event.preventDefault();
-        void save(theirs?.ref ?? record?.ref ?? null);
+        void save(theirs?.ref ?? seen);
       }}
     >
       <Segmented
