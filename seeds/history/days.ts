@@ -7,8 +7,11 @@ import { arrayField } from './copy';
 import type { Lines, SiteHistory } from './site-history';
 import { localDays } from './quarters';
 
-export const DAYS = 270;
+/** Two years and a month: years can be compared. */
+export const DAYS = 760;
 const DAY_S = 86_400;
+/** Minutes with light to run by on a day that was not run in full. */
+const LIT_MINUTES = 600;
 /** What wiring, mismatch, heat in the inverter and conversion leave of the modules' power in a good plant. */
 const GOOD_PLANT = 0.955;
 
@@ -20,6 +23,9 @@ interface PlaneDay {
   kept: number;
   /** °C, weighted by power. */
   cell: number;
+  /** Wh/m² in the plane, and that times the cells' °C. */
+  insolation: number;
+  warmth: number;
 }
 
 /**
@@ -92,6 +98,18 @@ export function writeDays(
       const hours = planes.get(s.plane)?.hours ?? 0;
       return sum + type.vmpRef * type.impRef * s.slots.length * hours * GOOD_PLANT;
     }, 0);
+  const nameplates = new Map<string, number>();
+  let gammaByNameplate = 0;
+  for (const s of plan.strings) {
+    const type = typeNamed(organisation.moduleTypes, s.slots[0]?.moduleType ?? '');
+    const p0 = type.vmpRef * type.impRef * s.slots.length;
+    nameplates.set(s.plane, (nameplates.get(s.plane) ?? 0) + p0);
+    gammaByNameplate += type.gammaPmp * p0;
+  }
+  const nameplate = [...nameplates.values()].reduce((sum, p0) => sum + p0, 0);
+  /** Over the planes, by what hangs in each. */
+  const mean = (planes: Map<string, PlaneDay>, of: (p: PlaneDay) => number): number =>
+    [...planes].reduce((sum, [name, p]) => sum + (of(p) * (nameplates.get(name) ?? 0)) / nameplate, 0);
   const firstFull = [...history.siteRollUp.days.keys()][0];
   for (const [day, planes] of planeDays) {
     const dc = dcByDay.get(day);
@@ -109,6 +127,21 @@ export function writeDays(
         measured?.lost ?? 0,
         measured?.lostGrid ?? 0,
         complete.toFixed(3),
+        Math.round(nameplate),
+        gammaByNameplate / nameplate,
+        96,
+        Math.round(96 * complete),
+        mean(planes, (p) => p.insolation).toFixed(1),
+        Math.round(ac),
+        Math.round(dc),
+        Math.round(96 * complete),
+        mean(planes, (p) => p.insolation).toFixed(1),
+        mean(planes, (p) => p.warmth).toFixed(1),
+        Math.round(ac),
+        measured?.lit ?? LIT_MINUTES,
+        0,
+        Math.round(((measured?.lostLight ?? 0) * nameplate) / 60_000),
+        Math.round(((measured?.lostLightGrid ?? 0) * nameplate) / 60_000),
       ].join('\t'),
     );
   }
@@ -146,10 +179,18 @@ function addHour(
     const poa = light.beam * sky.beamThrough(now, middle[0] / 2, middle[1] / 2) + light.diffuse;
     const cell = now.temperatureAir + (0.034 * poa) / (1 + 0.09 * Math.max(0, now.windSpeed - 1));
     const hours = (poa / 1000) * (1 - 0.0034 * (cell - 25));
-    const sums = planes.get(p.name) ?? { hours: 0, kept: 1 - sky.soiling(atS), cell: 25 };
+    const sums = planes.get(p.name) ?? {
+      hours: 0,
+      kept: 1 - sky.soiling(atS),
+      cell: 25,
+      insolation: 0,
+      warmth: 0,
+    };
     sums.cell =
       sums.hours + hours > 0 ? (sums.cell * sums.hours + cell * hours) / (sums.hours + hours) : cell;
     sums.hours += hours;
+    sums.insolation += poa;
+    sums.warmth += poa * cell;
     planes.set(p.name, sums);
   }
 }

@@ -1,9 +1,21 @@
 import { instant, type WaitingRows } from './copy';
 import { QUARTER_S } from './quarters';
 
+export interface SiteDayTotal {
+  energyAc: number;
+  /** Minutes: seen, with enough light to run by, and of those without power. */
+  minutes: number;
+  lit: number;
+  lost: number;
+  lostGrid: number;
+  /** W/m² minutes of the lost ones. */
+  lostLight: number;
+  lostLightGrid: number;
+}
+
 /** What a site made, quarter by quarter and by local day. */
 export class SiteRollUp {
-  readonly days = new Map<string, { energyAc: number; lost: number; lostGrid: number; minutes: number }>();
+  readonly days = new Map<string, SiteDayTotal>();
   private atS = NaN;
   private minutes = 0;
   private ac = 0;
@@ -26,15 +38,26 @@ export class SiteRollUp {
     this.ac += now.ac * minutes;
     this.poa += now.poa * minutes;
     const day = this.localDay(start);
-    const total = this.days.get(day) ?? { energyAc: 0, lost: 0, lostGrid: 0, minutes: 0 };
+    const total = this.days.get(day) ?? {
+      energyAc: 0,
+      minutes: 0,
+      lit: 0,
+      lost: 0,
+      lostGrid: 0,
+      lostLight: 0,
+      lostLightGrid: 0,
+    };
     this.days.set(day, total);
     total.energyAc += (now.ac * minutes) / 60;
     total.minutes += minutes;
-    // Enough light to run by, and nothing made.
-    if (now.poa > 60 && now.ac <= 0) {
-      total.lost += minutes;
-      if (now.gridLost) total.lostGrid += minutes;
-    }
+    if (now.poa <= 60) return; // not enough light to run by
+    total.lit += minutes;
+    if (now.ac > 0) return;
+    total.lost += minutes;
+    total.lostLight += now.poa * minutes;
+    if (!now.gridLost) return;
+    total.lostGrid += minutes;
+    total.lostLightGrid += now.poa * minutes;
   }
 
   close(): void {

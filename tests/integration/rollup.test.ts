@@ -200,6 +200,15 @@ describe('roll-ups', () => {
       expect(rows.map((r) => r.poa_insolation)).toEqual([200, 200, 200]);
       expect([day.lost_minutes, day.lost_minutes_grid]).toEqual([15, 15]);
       expect(day.energy_expected).toBeGreaterThan(0);
+      // sums of the quarters with light and power, as domain/output/day-figures takes them
+      expect([day.quarters_due, day.quarters_lit, day.quarters_warm]).toEqual([92, 3, 3]);
+      expect([day.insolation, day.insolation_warm, day.insolation_temperature]).toEqual([600, 600, 21_000]);
+      expect([Number(day.energy_ac_lit), Number(day.energy_ac_warm), day.minutes_lit]).toEqual([
+        3000, 3000, 45,
+      ]);
+      expect(Number(day.lost_energy)).toBe(Math.round(Number(day.nameplate) * 0.8 * 0.25));
+      expect(day.lost_energy_grid).toBe(day.lost_energy);
+      expect(day.gamma_pmp).toBeLessThan(0);
     }
   });
 });

@@ -139,7 +139,8 @@ export async function rollDay(db: Knex, siteId: number, day: string): Promise<vo
  * Lost minutes: enough light to run by (60 W/m² in the plane) and no AC power, by minutes that both were reported in.
  * What the weather allowed: nameplate power by the plane's insolation, corrected for module temperature where it is
  * measured (IEC 61724-1, temperature-corrected reference yield); NULL without a sensor in the plane. Complete: frames
- * over those that the daylight quarters of the day should have brought.
+ * over those that the daylight quarters of the day should have brought. "Lit" sums run over quarters with light and
+ * power both, "warm" ones over those with module temperature too (domain/output/day-figures).
  */
 async function rollSiteDay(db: Knex, siteId: number, day: string): Promise<void> {
   await db.raw(
@@ -150,33 +151,61 @@ async function rollSiteDay(db: Knex, siteId: number, day: string): Promise<void>
      ac as (select sum(ac_power) / 4.0 as energy from site_quarter q, span where q.site_id = :siteId and q.at >= from_at and q.at < to_at),
      dc as (select coalesce(sum(energy), 0) as energy from string_day where site_id = :siteId and day = :day),
      made as (
-       select date_trunc('minute', f.at) as minute, sum(f.ac_power) as p, bool_or(f.status = 'grid_lost') as grid_lost
+       select date_trunc('minute', f.at) as minute, sum(f.ac_power) as p, bool_or(f.status = 'grid_lost') as grid_lost,
+         bool_or(f.status in ('derated', 'curtailed')) as limited
        from span, inverter v join inverter_frame f on f.inverter_id = v.id
        where v.site_id = :siteId and f.at >= from_at and f.at < to_at group by 1),
      light as (
        select date_trunc('minute', f.at) as minute, avg(f.irradiance) as poa, avg(f.temperature_module) / 10.0 as t
        from span, sensor n join weather_frame f on f.sensor_id = n.id
        where n.site_id = :siteId and n.kind = 'poa_global' and f.at >= from_at and f.at < to_at group by 1),
-     lost as (
-       select count(*) as minutes, count(*) filter (where grid_lost) as grid
-       from made join light using (minute) where poa > 60 and p <= 0),
      nameplate as (
-       select sum(m.vmp_ref::float8 * m.imp_ref) as p0, avg(m.gamma_pmp) as gamma
+       select sum(m.vmp_ref::float8 * m.imp_ref) as p0,
+         sum(m.gamma_pmp::float8 * m.vmp_ref * m.imp_ref) / nullif(sum(m.vmp_ref::float8 * m.imp_ref), 0) as gamma
        from slot join module_type m on m.id = slot.module_type_id where slot.site_id = :siteId),
+     lost as (
+       select count(*) filter (where poa > 60) as lit, count(*) filter (where poa > 60 and limited) as limited,
+         count(*) filter (where poa > 60 and p <= 0) as minutes, count(*) filter (where poa > 60 and p <= 0 and grid_lost) as grid,
+         coalesce(sum(poa) filter (where poa > 60 and p <= 0), 0) / 60000 * max(p0) as energy,
+         coalesce(sum(poa) filter (where poa > 60 and p <= 0 and grid_lost), 0) / 60000 * max(p0) as energy_grid
+       from made join light using (minute), nameplate),
+     quarters as (
+       select date_bin('15 min', minute, '2000-01-01Z') as at, avg(poa) / 4 as insolation, avg(t) as t from light group by 1),
      allowed as (
-       select sum(insolation * (1 + gamma * (coalesce(t, 25) - 25))) / 1000 * max(p0) as energy from nameplate, (
-         select date_bin('15 min', minute, '2000-01-01Z') as quarter, avg(poa) / 4 as insolation, avg(t) as t from light group by 1) l),
+       select sum(insolation * (1 + gamma * (coalesce(t, 25) - 25))) / 1000 * max(p0) as energy from nameplate, quarters),
+     lit as (
+       select count(*) as quarters, sum(q.insolation) as insolation, sum(a.ac_power) / 4.0 as ac,
+         sum(coalesce((select sum(d.energy) / 600.0 from string s join string_quarter d on d.string_id = s.id and d.at = q.at
+                       where s.site_id = :siteId), 0)) as dc,
+         count(q.t) as warm, coalesce(sum(q.insolation) filter (where q.t is not null), 0) as insolation_warm,
+         coalesce(sum(q.insolation * q.t), 0) as insolation_temperature,
+         coalesce(sum(a.ac_power) filter (where q.t is not null), 0) / 4.0 as ac_warm
+       from quarters q join site_quarter a on a.site_id = :siteId and a.at = q.at
+       where q.insolation is not null
+         and exists (select from made where made.minute >= q.at and made.minute < q.at + interval '15 min' and made.p is not null)
+       having count(*) > 0),
      come as (
        select sum(least(q.frames, ceil(900.0 / report_interval_s))) as n, count(*) * max(ceil(900.0 / report_interval_s)) as due
        from span, string s join string_quarter q on q.string_id = s.id
        where s.site_id = :siteId and q.at >= from_at and q.at < to_at)
-     insert into site_day (day, site_id, energy_ac, energy_dc, energy_expected, lost_minutes, lost_minutes_grid, complete)
+     insert into site_day (day, site_id, energy_ac, energy_dc, energy_expected, lost_minutes, lost_minutes_grid, complete,
+       nameplate, gamma_pmp, quarters_due, quarters_lit, insolation, energy_ac_lit, energy_dc_lit, quarters_warm,
+       insolation_warm, insolation_temperature, energy_ac_warm, minutes_lit, limited_minutes, lost_energy, lost_energy_grid)
      select :day, :siteId, round(coalesce(ac.energy, 0)), dc.energy, round(allowed.energy), least(lost.minutes, 1500), least(lost.grid, 1500),
-       coalesce(least(1, come.n / nullif(come.due, 0)), 1)
-     from ac, dc, lost, allowed, come where ac.energy is not null or dc.energy > 0
+       coalesce(least(1, come.n / nullif(come.due, 0)), 1),
+       round(p0), gamma, extract(epoch from to_at - from_at) / 900, lit.quarters, lit.insolation, round(lit.ac), round(lit.dc), lit.warm,
+       lit.insolation_warm, lit.insolation_temperature, round(lit.ac_warm), least(lost.lit, 1500), least(lost.limited, 1500),
+       round(lost.energy), round(lost.energy_grid)
+     from span, ac, dc, lost, allowed, come, nameplate left join lit on true where ac.energy is not null or dc.energy > 0
      on conflict (site_id, day) do update set energy_ac = excluded.energy_ac, energy_dc = excluded.energy_dc,
        energy_expected = excluded.energy_expected, lost_minutes = excluded.lost_minutes,
-       lost_minutes_grid = excluded.lost_minutes_grid, complete = excluded.complete`,
+       lost_minutes_grid = excluded.lost_minutes_grid, complete = excluded.complete, nameplate = excluded.nameplate,
+       gamma_pmp = excluded.gamma_pmp, quarters_due = excluded.quarters_due, quarters_lit = excluded.quarters_lit,
+       insolation = excluded.insolation, energy_ac_lit = excluded.energy_ac_lit, energy_dc_lit = excluded.energy_dc_lit,
+       quarters_warm = excluded.quarters_warm, insolation_warm = excluded.insolation_warm,
+       insolation_temperature = excluded.insolation_temperature, energy_ac_warm = excluded.energy_ac_warm,
+       minutes_lit = excluded.minutes_lit, limited_minutes = excluded.limited_minutes, lost_energy = excluded.lost_energy,
+       lost_energy_grid = excluded.lost_energy_grid`,
     { day, siteId },
   );
 }
