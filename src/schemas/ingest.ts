@@ -196,3 +196,42 @@ export const serverMessage = z.discriminatedUnion('type', [
 ]);
 export type ServerMessage = z.infer<typeof serverMessage>;
 export type Roster = z.infer<typeof roster>;
+
+// ---- by HTTPS: POST /api/v1/ingest takes the messages above, and answers after COMMIT ----
+/** Bytes of a batch as it is sent, and unpacked. A JSON document may have no more than one message may. */
+export const BATCH_MAX_BYTES = 4 * 1024 * 1024;
+export const BATCH_UNPACKED_MAX_BYTES = 8 * 1024 * 1024;
+export const BATCH_MESSAGES_MAX = 2000;
+
+/** The body: one message, or a list of them; as NDJSON (application/x-ndjson) one message a line. */
+export const ingestMessage = z.union([loggerMessage, framesEnvelope]);
+export const ingestBatch = z.union([ingestMessage, z.array(ingestMessage).min(1).max(BATCH_MESSAGES_MAX)]);
+
+export const refusedItem = z.object({
+  /** Of the message in the batch, from 0. */
+  index: z.int(),
+  seq: z.int().nullable(),
+  field: z.string(),
+  reason: z.string(),
+  remedy: z.string(),
+  /** Whether sending the same again can help. */
+  again: z.boolean(),
+});
+export type RefusedItem = z.infer<typeof refusedItem>;
+
+/** What became of a batch; whatever is counted as accepted is durable. */
+export const ingestReply = z.object({
+  messages: z.int(),
+  accepted: z.int(),
+  readings: z.int(),
+  refused: z.array(refusedItem),
+  /** The roster's version as it is now: fetch it again where the logger has another. */
+  roster: z.int(),
+  /** A roll call is open: report what is heard (`heard`). */
+  listen: z.boolean(),
+});
+export type IngestReply = z.infer<typeof ingestReply>;
+
+/** GET /api/v1/ingest/roster */
+export const rosterReply = z.object({ roster, listen: z.boolean() });
+export type RosterReply = z.infer<typeof rosterReply>;

@@ -54,6 +54,9 @@ export const paths = {
   cases: () => '/cases',
   caseFile: (caseRef: string) => `/cases/${caseRef}`,
   caseNew: (site?: string) => (site ? `/cases/new?site=${site}` : '/cases/new'),
+  loggers: (site: string) => `/sites/${site}/loggers`,
+  /** Readings of the time before Wakeline, from a file. */
+  historyImport: (site: string) => `/sites/${site}/history-import`,
   plannedWorks: (site: string) => `/sites/${site}/planned-works`,
   figures: () => '/figures',
   siteFigures: (site: string) => `/sites/${site}/figures`,
@@ -153,6 +156,15 @@ export const paths = {
     shutdown: () => '/api/shutdown',
     shutdownCsv: () => '/api/shutdown.csv',
     customer: (site: string) => `/api/my-site/${site}`,
+    /** For loggers that report by HTTPS. */
+    v1Ingest: () => '/api/v1/ingest',
+    v1IngestRoster: () => '/api/v1/ingest/roster',
+    loggers: (site: string) => `/api/sites/${site}/loggers`,
+    loggerTokens: (site: string, logger: string) => `/api/sites/${site}/loggers/${logger}/tokens`,
+    loggerTokenEnd: (site: string, logger: string, token: string) =>
+      `/api/sites/${site}/loggers/${logger}/tokens/${token}/end`,
+    historyImports: (site: string) => `/api/sites/${site}/history-imports`,
+    historyImportUndo: (site: string, made: string) => `/api/sites/${site}/history-imports/${made}/undo`,
   },
   live: () => '/live',
   ingest: () => '/ingest/v1',

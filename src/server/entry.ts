@@ -10,6 +10,7 @@ import {
 import { createExports as nodeExports } from '@astrojs/node/server.js';
 import type { SSRManifest } from 'astro';
 import sirv from 'sirv';
+import { paths } from '../schemas/paths';
 import { config } from './config';
 import { ERROR_KINDS } from './errors';
 import { answerHeaders, commonHeaders } from './http/headers';
@@ -101,6 +102,7 @@ const listening = (server: Server, port: number, host: string): Promise<void> =>
 async function startServer(handler: Handler, options: StartOptions): Promise<Running> {
   const settings = config();
   const isWeb = settings.WAKELINE_ROLES.includes('web');
+  const takesReadings = settings.WAKELINE_ROLES.includes('ingest');
   endOnUnhandled();
   const common = Object.entries(commonHeaders(settings));
   const assets = sirv(options.client, {
@@ -115,7 +117,8 @@ async function startServer(handler: Handler, options: StartOptions): Promise<Run
   const listener: RequestListener = (req, res) => {
     if (!settings.TRUST_PROXY) dropForwarded(req); // Astro believes them from anybody
     if (refuseEarly(req, res)) return;
-    if (!isWeb) return answer(req, res, 404, 'This process serves no pages.');
+    const forLoggers = takesReadings && req.url?.startsWith(paths.api.v1Ingest());
+    if (!isWeb && !forLoggers) return answer(req, res, 404, 'This process serves no pages.');
     assets(req, res, () => void handler(req, res)); // without `next`: unknown paths get the 404 page
   };
   const files = certificateFiles(settings);

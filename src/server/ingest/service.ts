@@ -13,10 +13,12 @@ import {
   type KnownLogger,
 } from '../queries/ingest-loggers';
 import { CHANNELS, readLeased, readWritten } from '../queries/live-notices';
+import { endedTokens, touchTokens } from '../queries/ingest-tokens';
 import { currentRoster, rosterVersion } from '../queries/roster';
 import type { Batch } from './batch';
 import { Judgement } from './judgement';
 import { Notices } from './notices';
+import { OverHttps } from './over-https';
 import { Queue } from './queue';
 import { Refusals } from './refusals';
 import { Session, type SessionHost } from './session';
@@ -27,6 +29,8 @@ const PAYLOAD_MAX_BYTES = 16 * 1024 * 1024;
 const RENEW_EVERY_MS = 10_000;
 /** A logger that nobody has served for so long is lost, seconds. */
 const LOST_AFTER_S = 20;
+/** How often it is written down that tokens are in use: every so many renewals of leases. */
+const TOUCH_EVERY = 6;
 
 /** Ingest of one process: its connections, the queue to the database, and the judgement of what was written. */
 export class Ingest implements SessionHost {
@@ -38,6 +42,7 @@ export class Ingest implements SessionHost {
     perMessageDeflate: false,
   });
   readonly refusals = new Refusals();
+  readonly overHttps: OverHttps;
   private readonly sessions = new Set<Session>();
   /** The session that serves each logger. */
   private readonly serving = new Map<number, Session>();
@@ -46,6 +51,7 @@ export class Ingest implements SessionHost {
   private readonly queue: Queue;
   private readonly listener: Listener;
   private renewTimer: NodeJS.Timeout | undefined;
+  private renewals = 0;
   private upkeep: Promise<void> = Promise.resolve();
   private stopping = false;
   /** Readings made durable since the start. */
@@ -54,16 +60,25 @@ export class Ingest implements SessionHost {
   constructor() {
     this.judgement = new Judgement({
       notices: this.notices,
-      progress: () =>
-        [...this.serving.values()].map((s) => ({ logger: s.logger, spokeAt: s.spokeAt, newestS: s.newestS })),
+      // a logger on both ways: its connection says more of it, and comes last
+      progress: () => [
+        ...this.overHttps.progress(),
+        ...[...this.serving.values()].map(({ logger, spokeAt, newestS }) => ({ logger, spokeAt, newestS })),
+      ],
     });
     this.queue = new Queue({
       written: (batch, written) => this.written(batch, written),
       pressure: (paused) => this.pressure(paused),
       away: () => this.tellAll(5000),
     });
+    this.overHttps = new OverHttps({
+      enqueue: (item) => this.queue.add(item),
+      refused: (loggerId, field, reason) => this.refusals.add(loggerId, field, reason),
+      full: () => this.queue.paused,
+      changed: (siteId) => this.notices.changed([siteId], []),
+    });
     this.listener = new Listener(
-      [CHANNELS.rollCall, CHANNELS.asBuilt, CHANNELS.leased, CHANNELS.written],
+      [CHANNELS.rollCall, CHANNELS.asBuilt, CHANNELS.leased, CHANNELS.written, CHANNELS.tokens],
       (channel, payload) => this.notice(channel, payload),
       () => this.catchUpWithNotices(),
     );
@@ -80,6 +95,7 @@ export class Ingest implements SessionHost {
   async stop(): Promise<void> {
     this.stopping = true;
     clearInterval(this.renewTimer);
+    this.overHttps.stop();
     for (const { ws } of this.sessions)
       ws.close(1001, 'the server is going away; come back in a few seconds');
     await this.queue.stop();
@@ -133,6 +149,7 @@ export class Ingest implements SessionHost {
     this.serving.set(logger.id, session);
     const db = database('ingest');
     await takeLease(db, { loggerId: logger.id, process: this.process, address, firmware });
+    await touchTokens(db, [{ tokenId: logger.tokenId, at: new Date(session.spokeAt), address }]);
     const roster = await currentRoster(db, { id: logger.id, siteId: logger.siteId });
     const open = await openRollCalls(db, [logger.siteId]);
     if (roster.changed) this.notices.changed([logger.siteId], []);
@@ -190,6 +207,10 @@ export class Ingest implements SessionHost {
     } else if (channel === CHANNELS.leased) {
       const leased = readLeased(payload);
       if (leased && leased.by !== this.process) this.letGo(leased.logger);
+    } else if (channel === CHANNELS.tokens) {
+      const loggerId = Number(payload);
+      if ([...this.sessions].some((s) => s.logger.id === loggerId))
+        this.later(() => this.endSessions(loggerId));
     } else if (channel === CHANNELS.written) {
       const written = readWritten(payload);
       if (written && written.by !== this.judgement.id) this.judgement.reload(written.site);
@@ -198,7 +219,7 @@ export class Ingest implements SessionHost {
 
   /** Notices may have been missed: asks for everything that they could have told. */
   private catchUpWithNotices(): void {
-    if (this.serving.size === 0) return;
+    if (this.sessions.size === 0) return;
     const sites = [...new Set([...this.serving.values()].map((s) => s.logger.siteId))];
     this.later(async () => {
       await this.tellListen(sites);
@@ -221,6 +242,18 @@ export class Ingest implements SessionHost {
     if (!session) return;
     this.serving.delete(loggerId);
     session.end('conflict', 'a newer connection of this logger took its place');
+  }
+
+  /** Closes connections whose token was ended meanwhile: those of one logger, or all. */
+  private async endSessions(loggerId?: number): Promise<void> {
+    const concerned = [...this.sessions].filter((s) => loggerId === undefined || s.logger.id === loggerId);
+    const ended = await endedTokens(
+      database('ingest'),
+      concerned.map((s) => s.logger.tokenId),
+    );
+    for (const session of concerned)
+      if (ended.has(session.logger.tokenId))
+        session.end('unauthenticated', 'this token was ended; give the logger a new one');
   }
 
   private async tellListen(sites: readonly number[]): Promise<void> {
@@ -254,6 +287,12 @@ export class Ingest implements SessionHost {
         );
         for (const session of mine) if (!kept.has(session.logger.id)) this.letGo(session.logger.id);
       }
+      await this.endSessions();
+      if (this.renewals++ % TOUCH_EVERY === 0)
+        await touchTokens(
+          db,
+          mine.map((s) => ({ tokenId: s.logger.tokenId, at: new Date(s.spokeAt), address: s.address })),
+        );
       const lost = await tellLostLoggers(db, LOST_AFTER_S);
       if (lost.length > 0) this.notices.changed(lost, []);
     } catch (error) {

@@ -1,18 +1,11 @@
 import type { WebSocket } from 'ws';
-import { z } from 'zod';
-import {
-  CLOCK_AHEAD_MAX_S,
-  hello,
-  PROTOCOL,
-  type LoggerMessage,
-  type Roster,
-  type ServerMessage,
-} from '../../schemas/ingest';
+import type { LoggerMessage, Roster, ServerMessage } from '../../schemas/ingest';
 import { ERROR_KINDS, isDatabaseAway, type ErrorKind } from '../errors';
 import { log } from '../log';
 import type { KnownLogger } from '../queries/ingest-loggers';
 import type { RosterView } from '../queries/ingest-rows';
 import type { Item } from './batch';
+import { readHello } from './hello';
 import { readEnvelope, readJson, readMessage, type Refused } from './read-message';
 
 /** What a connection needs of the service around it. */
@@ -31,7 +24,6 @@ export interface SessionHost {
 
 const HELLO_WITHIN_MS = 15_000;
 const PING_EVERY_MS = 20_000;
-const versionOnly = z.object({ type: z.literal('hello'), protocol: z.unknown() });
 
 /** One connection of a logger, from the upgrade to its end. Messages are taken in the order in which they came. */
 export class Session {
@@ -140,44 +132,14 @@ export class Session {
   }
 
   private hello(value: Record<string, unknown>): void {
-    const refuse = (field: string, reason: string, again: boolean) =>
+    const read = readHello(value, this.logger.serial, Math.floor(Date.now() / 1000));
+    if (!read.ok) {
+      const { field, reason, again, end } = read;
       this.refuse({ seq: null, field, reason, again });
-    // a later version may look different altogether: its number comes first
-    const version = versionOnly.safeParse(value);
-    if (version.success && version.data.protocol !== PROTOCOL) {
-      refuse(
-        'protocol',
-        `this server speaks version ${PROTOCOL}; the logger said ${String(version.data.protocol)}`,
-        false,
-      );
-      this.end('invalid', `protocol version ${PROTOCOL} only`);
+      if (end) this.end(end.kind, end.reason);
       return;
     }
-    const parsed = hello.safeParse(value);
-    if (!parsed.success) {
-      const issue = parsed.error.issues[0];
-      refuse(issue?.path.join('.') || 'message', issue?.message ?? 'is no hello', true);
-      return;
-    }
-    if (parsed.data.logger !== this.logger.serial) {
-      refuse(
-        'logger',
-        `the token belongs to another logger than "${parsed.data.logger}"; give each logger its own`,
-        false,
-      );
-      this.end('forbidden', 'the token belongs to another logger');
-      return;
-    }
-    const aheadS = parsed.data.clock - Math.floor(Date.now() / 1000);
-    if (aheadS > CLOCK_AHEAD_MAX_S) {
-      refuse(
-        'clock',
-        `is ${aheadS} s ahead of the server's clock; set the logger's clock and say hello again`,
-        true,
-      );
-      return;
-    }
-    const { firmware } = parsed.data;
+    const { firmware } = read;
     this.meanwhile(async () => {
       const { message, view, listen } = await this.host.arrived(this, firmware);
       clearTimeout(this.helloTimer);

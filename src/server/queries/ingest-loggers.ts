@@ -10,6 +10,8 @@ export interface KnownLogger {
   siteId: number;
   organisationId: number;
   serial: string;
+  /** The token that it came with. */
+  tokenId: number;
 }
 
 /** The logger that a token's hash stands for. `ended`: the token was good once; the attempt counts at the logger. */
@@ -18,7 +20,7 @@ export async function loggerOfToken(
   hash: Buffer,
 ): Promise<(KnownLogger & { ended: boolean }) | undefined> {
   const { rows } = await db.raw<{ rows: (KnownLogger & { ended: boolean })[] }>(
-    `select l.id, l.site_id as "siteId", s.organisation_id as "organisationId", l.serial,
+    `select l.id, l.site_id as "siteId", s.organisation_id as "organisationId", l.serial, t.id as "tokenId",
        t.ended_at is not null and t.ended_at <= now() as ended
      from ingest_token t join logger l on l.id = t.logger_id join site s on s.id = l.site_id where t.hash = ?`,
     [hash],
@@ -49,6 +51,38 @@ export async function takeLease(
      select pg_notify('leased', json_build_object('logger', id, 'by', :process::text)::text),
        pg_notify('changed', json_build_object('sites', json_build_array(site_id))::text) from taken`,
     { ...lease, lease: LEASE_S },
+  );
+}
+
+/** Who holds the lease of a logger that reports by HTTPS: whichever process its next batch reaches. */
+export const BY_HTTPS = 'https';
+
+/**
+ * A logger spoke by HTTPS: it counts as connected for `holdS` seconds. A WebSocket of it keeps its lease.
+ */
+export async function spokeByHttps(
+  db: Knex,
+  spoke: { loggerId: number; address: string; firmware: string | null; holdS: number },
+): Promise<void> {
+  await db.raw(
+    `with before as (select id, coalesce(leased_until < now() or leased_by = :https, true) as free,
+         coalesce(leased_until < now(), true) as away from logger where id = :loggerId for update),
+     taken as (
+       update logger l set last_spoke_at = now(), last_address = :address, firmware = coalesce(:firmware, firmware),
+         connected_at = case when b.away then now() else connected_at end,
+         leased_by = case when b.free then :https else leased_by end,
+         leased_until = case when b.free then now() + make_interval(secs => :holdS) else leased_until end
+       from before b where l.id = b.id returning l.site_id, l.serial, b.away),
+     told as (
+       insert into event (at, organisation_id, site_id, kind, detail)
+       select now(), s.organisation_id, s.id, 'logger_connected', jsonb_build_object('logger', taken.serial)
+       from taken join site s on s.id = taken.site_id
+       where taken.away and (select e.kind from event e where e.site_id = s.id
+           and e.kind in ('logger_connected', 'logger_lost') and e.detail ->> 'logger' = taken.serial
+           order by e.id desc limit 1) is distinct from 'logger_connected'
+       returning site_id)
+     select pg_notify('changed', json_build_object('sites', json_build_array(site_id))::text) from taken where away`,
+    { ...spoke, https: BY_HTTPS },
   );
 }
 
@@ -87,28 +121,6 @@ export async function tellLostLoggers(db: Knex, graceS: number): Promise<number[
     [graceS],
   );
   return rows.map((r) => r.siteId);
-}
-
-export interface Refusal {
-  loggerId: number;
-  count: number;
-  /** The newest one. */
-  at: Date;
-  field: string;
-  reason: string;
-}
-
-/** Adds up what was refused, where people can see it. */
-export async function countRefusals(db: Knex, refusals: readonly Refusal[]): Promise<void> {
-  await db.raw(
-    `update logger set refused_count = refused_count + x.n, last_refusal = x.last
-     from unnest(?::int4[], ?::int8[], ?::jsonb[]) x(logger_id, n, last) where logger.id = x.logger_id`,
-    [
-      refusals.map((r) => r.loggerId),
-      refusals.map((r) => r.count),
-      refusals.map((r) => JSON.stringify({ at: r.at.toISOString(), field: r.field, reason: r.reason })),
-    ],
-  );
 }
 
 /** Whether a roll call is open at each of these sites. */

@@ -14,6 +14,8 @@ export const CHANNELS = {
   asBuilt: 'as_built',
   /** {logger, by}: a process took a logger's lease. */
   leased: 'leased',
+  /** Logger id: one of its tokens was ended, or will be. */
+  tokens: 'tokens',
   /** {site, by}: frames or reports of a site were written by a process that may not be the one that judges it. */
   written: 'written',
 } as const;
@@ -75,4 +77,9 @@ export async function tellSiteChanged(tx: Knex, siteId: number): Promise<void> {
 /** Tells ingest and judgement that a site's as-built has changed: loggers then get a new roster. */
 export async function tellAsBuiltChanged(tx: Knex, siteId: number): Promise<void> {
   await tx.raw('select pg_notify(?, ?)', [CHANNELS.asBuilt, String(siteId)]);
+}
+
+/** Tells ingest that tokens of a logger were ended: connections that came with one of them are closed. */
+export async function tellTokensEnded(tx: Knex, loggerId: number): Promise<void> {
+  await tx.raw('select pg_notify(?, ?)', [CHANNELS.tokens, String(loggerId)]);
 }

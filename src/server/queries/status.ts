@@ -1,5 +1,6 @@
 import type { InstallationStatus } from '../../schemas/api/status';
 import type { Tx } from '../db/transaction';
+import { BY_HTTPS } from './ingest-loggers';
 import { SITE_VISIBLE } from './visible-site';
 
 const iso = (at: Date | null): string | null => at?.toISOString() ?? null;
@@ -53,7 +54,7 @@ export async function processStatus(tx: Tx): Promise<InstallationStatus['process
   const { rows } = await tx.raw<{ rows: { name: string; loggers: number; until: Date }[] }>(
     `select l.leased_by as name, count(*)::int as loggers, max(l.leased_until) as until
      from logger l join site on site.id = l.site_id
-     where ${SITE_VISIBLE} and l.leased_until > now()
+     where ${SITE_VISIBLE} and l.leased_until > now() and l.leased_by <> '${BY_HTTPS}'
      group by l.leased_by order by l.leased_by`,
   );
   return rows.map((r) => ({ ...r, until: r.until.toISOString() }));
