@@ -36,6 +36,8 @@ export const FEATURES = [
   'serials',
   'roof',
   'design',
+  'notices',
+  'webhooks',
 ] as const;
 const AREAS = FEATURES.map((name) => `src/features/${name}`);
 
@@ -81,6 +83,7 @@ export const TABLE: readonly Row[] = [
       'commissioning',
       'access',
       'equipment',
+      'notices',
     ],
   },
   { folder: 'src/schemas', may: ['src/domain'], packages: ['zod'], subfolders: ['api'] },

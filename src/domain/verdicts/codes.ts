@@ -72,6 +72,7 @@ export const EVENT_KINDS = [
   'case_closed', // detail: {case, number, title, person, state}
   'case_reopened', // detail: {case, number, title, reason}
   'planned_work', // detail: {work, reason, startsAt, endsAt, person}
+  'handover_made', // detail: {pack, version, person}
 ] as const;
 export type EventKind = (typeof EVENT_KINDS)[number];
 

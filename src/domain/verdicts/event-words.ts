@@ -39,6 +39,7 @@ export const KIND_WORDS: Record<EventKind, string> = {
   case_closed: 'Case closed',
   case_reopened: 'Case reopened',
   planned_work: 'Planned work',
+  handover_made: 'Handed over',
 };
 /** The kinds to choose among, by their words. */
 export const KINDS = EVENT_KINDS.map((value) => ({ value, label: KIND_WORDS[value] })).sort((a, b) =>
@@ -163,7 +164,7 @@ export function eventWords(kind: EventKind, detail: Detail): EventWords {
     case 'cause_closed':
     case 'cause_reopened':
       return {
-        words: `${KIND_WORDS[kind]}: ${text(detail, 'headline')}`,
+        words: `${KIND_WORDS[kind]}${at('headline', ': ')}`,
         tone: kind === 'cause_closed' ? 'petrol' : detail.hazard === true ? 'crimson' : 'rust',
       };
     case 'case_opened':
@@ -172,11 +173,13 @@ export function eventWords(kind: EventKind, detail: Detail): EventWords {
     case 'case_closed':
     case 'case_reopened':
       return {
-        words: `Case ${typeof detail.number === 'number' ? detail.number : ''} ${CASE_DID[kind]}${at('person', ' by ')}: ${text(detail, 'title')}`,
+        words: `Case ${typeof detail.number === 'number' ? `${detail.number} ` : ''}${CASE_DID[kind]}${at('person', ' by ')}${at('title', ': ')}`,
         tone: kind === 'case_closed' ? 'petrol' : kind === 'case_reopened' ? 'rust' : 'slate',
       };
+    case 'handover_made':
+      return { words: `Handover papers made${at('person', ' by ')}`, tone: 'petrol' };
     case 'planned_work':
-      return { words: `Planned work: ${text(detail, 'reason')}`, tone: 'slate' };
+      return { words: `Planned work${at('reason', ': ')}`, tone: 'slate' };
   }
 }
 
