@@ -8,12 +8,12 @@ export async function up(knex: Knex): Promise<void> {
   await knex.raw(`
     alter table person add time_zone text; -- null: the organisation's
 
-    create table event_cursor ( -- how far a reader of event has come: everything up to it was read
+    create table event_reader ( -- how far a reader of event has come: everything up to it was read
       reader text primary key,
       xid xid8 not null,
       id int8 not null
     );
-    insert into event_cursor select 'notices', pg_snapshot_xmin(pg_current_snapshot()), 0;
+    insert into event_reader select 'notices', pg_snapshot_xmin(pg_current_snapshot()), 0;
 
     create table notice_choice ( -- what a person has chosen; no row: the defaults of the role
       person_id int4 primary key references person on delete cascade,
@@ -137,8 +137,8 @@ export async function up(knex: Knex): Promise<void> {
     create policy notice_app on notice to wakeline_app
       using (${own} or (select signing_in())) with check (${own});
     grant update on notice to wakeline_ingest;
-    grant select on event_cursor to wakeline_app, wakeline_ingest;
-    grant update on event_cursor to wakeline_ingest;
+    grant select on event_reader to wakeline_app, wakeline_ingest;
+    grant update on event_reader to wakeline_ingest;
     grant insert, update, delete on notice_choice to wakeline_app;
     grant insert on notice_choice to wakeline_ingest;
     grant insert, update, delete on notice_subject to wakeline_ingest;
@@ -158,7 +158,7 @@ export async function up(knex: Knex): Promise<void> {
 
 export async function down(knex: Knex): Promise<void> {
   await knex.raw(`
-    drop table webhook_attempt, webhook_delivery, webhook, notice_subject, notice_choice, event_cursor;
+    drop table webhook_attempt, webhook_delivery, webhook, notice_subject, notice_choice, event_reader;
     alter table message drop picture_id, drop unsubscribe_url;
     drop table letter_picture;
     do $$ begin
