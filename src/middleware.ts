@@ -1,6 +1,6 @@
 import { randomUUID } from 'node:crypto';
 import { defineMiddleware } from 'astro:middleware';
-import { signedInBy } from './server/auth/sessions';
+import { cookieName, signedInBy } from './server/auth/sessions';
 import { config } from './server/config';
 import { AppError } from './server/errors';
 import { answerHeaders } from './server/http/headers';
@@ -54,6 +54,9 @@ export const onRequest = defineMiddleware(async (context, next) => {
     return finish(await context.rewrite('/problem'), locals);
   }
   const response = finish(await next(), locals);
-  for (const cookie of cookies) response.headers.append('set-cookie', cookie);
+  // what the answer says of a cookie itself, a new session above all, is the last word
+  const said = new Set(response.headers.getSetCookie().map(cookieName));
+  for (const cookie of cookies)
+    if (!said.has(cookieName(cookie))) response.headers.append('set-cookie', cookie);
   return response;
 });

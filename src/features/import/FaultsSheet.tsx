@@ -6,6 +6,7 @@ import { Sheet } from '../../components/ui/Sheet';
 import { COLUMN_LABELS, type ImportColumn } from '../../domain/commissioning/import/columns';
 import { FAULT_CODES, type CellFault, type FaultCode } from '../../domain/commissioning/import/table';
 import { number } from '../../drawings/numbers';
+import { harmlessCell } from '../../schemas/csv-cell';
 import { cellKey } from './desk';
 import { FAULT_NAMES } from './words';
 
@@ -179,8 +180,7 @@ const sentence = (text: string): string => `${text.charAt(0).toUpperCase()}${tex
 
 /** The faults for whoever mends the file elsewhere; made here, for the server does not have the file. */
 function saveCsv(faults: readonly CellFault[], texts: Readonly<Record<string, string>>): void {
-  const quoted = (text: string) =>
-    `"${(/^[=+\-@\t\r]/.test(text) ? `'${text}` : text).replaceAll('"', '""')}"`;
+  const quoted = (text: string) => `"${harmlessCell(text).replaceAll('"', '""')}"`;
   const column = (c: ImportColumn) => COLUMN_LABELS[c];
   const records = [
     ['row', 'column', 'cell', 'what is wrong', 'what would do', 'proposal'],

@@ -1,5 +1,6 @@
 import { signInBody } from '../../schemas/api/account';
 import { paths } from '../../schemas/paths';
+import { replacingCookies } from '../../server/auth/sessions';
 import { returnPath } from '../../server/auth/return-path';
 import { publicEndpoint } from '../../server/http/endpoint';
 import { signIn } from '../../server/services/sign-in';
@@ -10,7 +11,8 @@ export const POST = publicEndpoint({ permission: 'public', body: signInBody }, a
     new Date(),
   );
   const home = role === 'customer' ? paths.customerHome() : paths.fleet();
-  return new Response(JSON.stringify({ next: returnPath(body.next, home) }), {
-    headers: { 'content-type': 'application/json', 'set-cookie': cookie },
-  });
+  const headers = new Headers({ 'content-type': 'application/json', 'cache-control': 'no-store' });
+  for (const line of await replacingCookies(context.locals.sessionId, cookie))
+    headers.append('set-cookie', line);
+  return new Response(JSON.stringify({ next: returnPath(body.next, home) }), { headers });
 });

@@ -1,7 +1,7 @@
 import { z } from 'zod';
 import { PASSWORD_MAX } from '../../domain/access/password';
 import { id } from './now';
-import { emailField } from './people';
+import { emailField, nameField } from './people';
 
 /** One's own account. Times ISO 8601 in UTC. */
 
@@ -54,7 +54,7 @@ export type SecondFactorBegun = z.infer<typeof beginSecondFactorReply>;
 export const confirmSecondFactorReply = z.object({ recoveryCodes: z.array(z.string()) });
 
 export const acceptBody = z.strictObject({
-  name: z.string().trim().min(2, 'Give your name.').max(120, 'Use at most 120 characters.'),
+  name: nameField,
   password: newPassword,
 });
 export const newPasswordBody = z.strictObject({ password: newPassword });

@@ -129,6 +129,18 @@ export async function openSession(
   return lucia.createSessionCookie(session.id).serialize();
 }
 
+/** The name that a Set-Cookie line sets. */
+export const cookieName = (line: string): string => line.split('=')[0] ?? '';
+
+/**
+ * What a browser is told when somebody signs in: their new session, and the end of whatever session it brought along.
+ * A session of before, planted or left behind, would else be read in the place of the new one.
+ */
+export async function replacingCookies(before: string | null, cookie: string): Promise<string[]> {
+  const blanks = await endSession(before);
+  return [...blanks.filter((line) => cookieName(line) !== cookieName(cookie)), cookie];
+}
+
 /** Ends a session and returns the blank cookies that clear it in the browser. */
 export async function endSession(sessionId: string | null): Promise<string[]> {
   const [kept, brief] = lucias();

@@ -247,6 +247,14 @@ export async function accountLinkByToken(tx: Tx, hash: Buffer): Promise<AccountL
   return rows[0];
 }
 
+/** Ends every letter's link of a person that was not used yet: what they had asked for is over. */
+export async function endAccountLinks(tx: Tx, personId: number): Promise<void> {
+  await tx('account_link')
+    .where({ person_id: personId })
+    .whereNull('used_at')
+    .update({ used_at: tx.fn.now() });
+}
+
 export async function useAccountLink(tx: Tx, id: number, at: Date): Promise<void> {
   await tx('account_link').where({ id }).update({ used_at: at });
 }

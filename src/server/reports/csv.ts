@@ -1,9 +1,10 @@
+import { harmlessCell } from '../../schemas/csv-cell';
+
 /**
  * The one CSV writer. RFC 4180: CRLF ends every record, a field with a quote, comma or line break is quoted
  * and its quotes doubled. UTF-8 with a byte-order mark, without which spreadsheets misread units and names.
  *
- * Text that a spreadsheet would take for a formula gets an apostrophe in front (OWASP, "CSV Injection":
- * = + - @ tab, carriage return, and their full-width forms). Numbers are written as numbers.
+ * Text that a spreadsheet would take for a formula gets an apostrophe in front. Numbers are written as numbers.
  */
 export type Cell = string | number | boolean | Date | null | undefined;
 
@@ -13,7 +14,6 @@ export interface Column<Row> {
   value: (row: Row) => Cell;
 }
 
-const FORMULA_START = /^[\s]*[=+\-@\t\r\uFF1D\uFF0B\uFF0D\uFF20]/;
 const NEEDS_QUOTES = /[",\r\n]|^\s|\s$/;
 
 /** One cell. Times are ISO 8601 in UTC; null, undefined and what is not finite are empty. */
@@ -22,7 +22,7 @@ export function csvField(cell: Cell): string {
   if (typeof cell === 'number') return Number.isFinite(cell) ? String(cell) : '';
   if (typeof cell === 'boolean') return cell ? 'yes' : 'no';
   if (cell instanceof Date) return Number.isNaN(cell.getTime()) ? '' : cell.toISOString();
-  const harmless = FORMULA_START.test(cell) ? `'${cell}` : cell;
+  const harmless = harmlessCell(cell);
   return NEEDS_QUOTES.test(harmless) ? `"${harmless.replaceAll('"', '""')}"` : harmless;
 }
 

@@ -11,6 +11,7 @@ import {
   accountLinkByToken,
   acceptInvitation,
   addAccountLink,
+  endAccountLinks,
   endSessionsOf,
   invitationByToken,
   setEmail,
@@ -150,6 +151,7 @@ export async function setPasswordByLink(
     await actFor(tx, link.organisationId);
     await useAccountLink(tx, link.id, at);
     await setPasswordHash(tx, link.personId, hash);
+    await endAccountLinks(tx, link.personId);
     await endSessionsOf(tx, link.personId);
     await addAuditEntry(tx, {
       organisationId: link.organisationId,
@@ -174,6 +176,7 @@ export async function confirmEmail(token: string, address: string, at: Date): Pr
     await actFor(tx, link.organisationId);
     await useAccountLink(tx, link.id, at);
     await setEmail(tx, link.personId, link.newEmail);
+    await endAccountLinks(tx, link.personId); // one that went to the address before
     await addAuditEntry(tx, {
       organisationId: link.organisationId,
       personId: link.personId,

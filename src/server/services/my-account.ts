@@ -13,7 +13,13 @@ import { publicUrl } from '../config';
 import type { Tx } from '../db/transaction';
 import { AppError, found } from '../errors';
 import { letter } from '../mail/letter';
-import { addAccountLink, endSessionsOf, isAddressTaken, setPasswordHash } from '../queries/accounts';
+import {
+  addAccountLink,
+  endAccountLinks,
+  endSessionsOf,
+  isAddressTaken,
+  setPasswordHash,
+} from '../queries/accounts';
 import { addMessage } from '../queries/outbox';
 import { addAuditEntry } from '../queries/people';
 import { endSessionByKey, secondFactorOf, sessionsOf, setSecondFactor } from '../queries/sessions';
@@ -110,6 +116,7 @@ export async function changePassword(
   await confirmed(caller, current);
   const hash = await hashNewPassword(password, caller.viewer);
   await setPasswordHash(tx, caller.actor.personId, hash);
+  await endAccountLinks(tx, caller.actor.personId);
   await endSessionsOf(tx, caller.actor.personId, caller.sessionId ? sessionHash(caller.sessionId) : null);
   await audit(tx, caller, 'account.password_changed');
 }
