@@ -1,50 +1,35 @@
-import { Logger, parseCronItems, run, runMigrations, type Runner, type TaskList } from 'graphile-worker';
+import { Logger, parseCronItems, run, runMigrations, type Runner } from 'graphile-worker';
 import { config } from '../config';
+import { Listener } from '../live/listener';
 import { log } from '../log';
-import { keepDays, mergeLateFrames } from './keep-days';
-import { sendDue } from '../mail/send-outbox';
-import { rollUpClosed, rollUpDirty } from './roll-up';
+import { CHANNELS } from '../queries/live-notices';
+import { keepDays } from './keep-days';
+import { CRON, TASKS } from './tasks';
 
 /** Background jobs. The library keeps its queue as the database's owner; the jobs themselves work as ingest. */
-export const TASKS: TaskList = {
-  roll_up: async () => {
-    const now = new Date();
-    const quarters = await rollUpClosed(now);
-    const late = await mergeLateFrames(now);
-    const redone = await rollUpDirty();
-    if (quarters + late + redone > 0) log.debug({ quarters, late, redone }, 'rolled up');
-  },
-  send_letters: async () => {
-    const { sent } = await sendDue(() => new Date());
-    if (sent > 0) log.info({ sent }, 'letters were sent');
-  },
-  keep_days: async () => {
-    const dropped = await keepDays(new Date());
-    if (dropped > 0) log.info({ dropped }, 'raw readings past their retention were given up');
-  },
-};
-
-const CRON = [
-  { task: 'roll_up', match: '* * * * *', options: { queueName: 'roll_up', jobKey: 'roll_up' } },
-  { task: 'send_letters', match: '* * * * *', options: { queueName: 'letters', jobKey: 'send_letters' } },
-  { task: 'keep_days', match: '7 * * * *', options: { queueName: 'keep_days', jobKey: 'keep_days' } },
-];
 
 const LEVELS = { error: 'error', warning: 'warn', info: 'debug', debug: 'debug' } as const;
-const logger = new Logger(() => (level, message) => {
+export const logger = new Logger(() => (level, message) => {
   log[LEVELS[level]]({ from: 'jobs' }, message);
 });
 
+/** A site's verdicts change in bursts: its causes are looked for so long after the first, once. */
+const GATHER_MS = 1000;
+
+interface Working {
+  runner: Runner;
+  listener: Listener;
+}
 // one per process, also when a development server reloads this module
 const KEY = Symbol.for('wakeline.worker');
-const shared = globalThis as unknown as Record<symbol, Runner | undefined>;
+const shared = globalThis as unknown as Record<symbol, Working | undefined>;
 
 export async function startWorker(): Promise<void> {
   if (shared[KEY]) return;
   const connectionString = config().DATABASE_URL;
   await runMigrations({ connectionString, logger });
   await keepDays(new Date());
-  shared[KEY] = await run({
+  const runner = await run({
     connectionString,
     taskList: TASKS,
     parsedCronItems: parseCronItems(CRON),
@@ -54,11 +39,40 @@ export async function startWorker(): Promise<void> {
     noHandleSignals: true,
     logger,
   });
+  // a lost wake-up is made good by the sweep
+  const listener = new Listener(
+    [CHANNELS.judged],
+    (_channel, payload) => {
+      const siteId = Number(payload);
+      if (Number.isInteger(siteId)) void askForCauses(runner, siteId);
+    },
+    () => undefined,
+  );
+  await listener.start();
+  shared[KEY] = { runner, listener };
+}
+
+async function askForCauses(runner: Runner, siteId: number): Promise<void> {
+  try {
+    await runner.addJob(
+      'causes',
+      { siteId },
+      {
+        jobKey: `causes:${siteId}`,
+        jobKeyMode: 'preserve_run_at',
+        runAt: new Date(Date.now() + GATHER_MS),
+        queueName: `causes:${siteId}`,
+      },
+    );
+  } catch (error) {
+    log.warn({ error, siteId }, 'causes could not be asked for; the sweep looks after them');
+  }
 }
 
 /** Lets the jobs that run come to their end. */
 export async function stopWorker(): Promise<void> {
-  const runner = shared[KEY];
+  const working = shared[KEY];
   shared[KEY] = undefined;
-  await runner?.stop();
+  await working?.listener.stop();
+  await working?.runner.stop();
 }

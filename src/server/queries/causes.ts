@@ -51,9 +51,15 @@ export interface CauseSiteRow {
  * Every site that the actor sees, or those of the given numbers (then whoever calls has checked them), at which any unit
  * or string is not as it should be. Whole sites come, since an explanation rests as much on the units that are well.
  * Three plain statements at most, joined here: one large one went astray whenever statistics were old.
+ *
+ * @param also `sound`: sites too at which all is well
  */
-export async function causeSites(tx: Tx, siteIds?: readonly number[]): Promise<CauseSiteRow[]> {
-  const sites = await concernedSites(tx, siteIds);
+export async function causeSites(
+  tx: Tx,
+  siteIds?: readonly number[],
+  also: { sound?: boolean } = {},
+): Promise<CauseSiteRow[]> {
+  const sites = await concernedSites(tx, siteIds, also.sound ?? false);
   if (sites.length === 0) return [];
   const ids = sites.map((s) => s.id);
   const units = await unitsOf(tx, ids);
@@ -66,14 +72,15 @@ export async function causeSites(tx: Tx, siteIds?: readonly number[]): Promise<C
 async function concernedSites(
   tx: Tx,
   siteIds: readonly number[] | undefined,
+  sound: boolean,
 ): Promise<Omit<CauseSiteRow, 'strings'>[]> {
   const { rows } = await tx.raw<{ rows: Omit<CauseSiteRow, 'strings'>[] }>(
     `with concerned as materialized (
        select site.id, site.ref, site.name, site.report_interval_s from site
        where ${siteIds ? 'site.id = any (:siteIds)' : SITE_VISIBLE}
-         and exists (select from string_judgement j where j.site_id = site.id
+         and (${sound} or exists (select from string_judgement j where j.site_id = site.id
                      and (j.stuck > 0 or j.not_shutting_down > 0 or j.unconfirmed > 0 or j.silent > 0
-                          or j.finding is not null)))
+                          or j.finding is not null))))
      select c.id, c.ref, c.name, c.report_interval_s as "reportIntervalS",
             (select percentile_cont(0.5) within group (order by d.energy::float8 / s.slots)
              from string_day d join string s on s.id = d.string_id

@@ -2,6 +2,7 @@ import type { Knex } from 'knex';
 import type pg from 'pg';
 import type { StringMemory, UnitCounts } from '../../domain/verdicts/memory';
 import type { EventKind } from '../../domain/verdicts/codes';
+import { CHANNELS } from './live-notices';
 
 /** What judgement keeps: its memory of each string up to the frame at `frame_at`, what changed, and events. */
 
@@ -159,6 +160,12 @@ export async function writeJudgements(
           events.map((e) => JSON.stringify(e.detail)),
         ],
       });
+    const sites = [...new Set([...unitEvents, ...events].map((e) => e.siteId))];
+    if (sites.length > 0)
+      await client.query('select pg_notify($1, id::text) from unnest($2::int4[]) id', [
+        CHANNELS.judged,
+        sites,
+      ]);
     await client.query('commit');
   } catch (error) {
     // where the connection is gone the server rolls back by itself

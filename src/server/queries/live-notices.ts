@@ -12,12 +12,16 @@ export const CHANNELS = {
   rollCall: 'roll_call',
   /** Site id: its as-built, its stage, its times or its types were changed. */
   asBuilt: 'as_built',
+  /** Site id: states or verdicts of its units have changed, or the findings of its strings. */
+  judged: 'judged',
   /** {logger, by}: a process took a logger's lease. */
   leased: 'leased',
   /** Logger id: one of its tokens was ended, or will be. */
   tokens: 'tokens',
   /** {site, by}: frames or reports of a site were written by a process that may not be the one that judges it. */
   written: 'written',
+  /** [person id]: their notices have changed. */
+  noticed: 'noticed',
 } as const;
 
 const changed = z.object({ sites: z.array(z.int()).default([]), strings: z.array(z.int()).default([]) });
@@ -36,6 +40,9 @@ function read<T extends z.ZodType>(schema: T, payload: string): z.infer<T> | und
 export const readChanged = (payload: string): Changed | undefined => read(changed, payload);
 export const readLeased = (payload: string): z.infer<typeof lease> | undefined => read(lease, payload);
 export const readWritten = (payload: string): z.infer<typeof written> | undefined => read(written, payload);
+
+/** The persons of a notice on `noticed`. */
+export const readNoticed = (payload: string): number[] => read(z.array(z.int()), payload) ?? [];
 
 /** A notice's payload must stay below 8000 bytes. */
 const IDS_A_NOTICE = 600;

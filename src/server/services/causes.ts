@@ -25,7 +25,8 @@ function slotsOf(string: CauseStringRow, gateways: ReadonlyMap<string, string>):
   });
 }
 
-function conditionOf(row: CauseSiteRow, at: Date): SiteCondition {
+/** A site's rows as the search for causes takes them. */
+export function conditionOf(row: CauseSiteRow, at: Date): SiteCondition {
   const atS = at.getTime() / 1000;
   const gateways = new Map(row.gateways.map((g) => [`${g.loggerId} ${g.number}`, g.name]));
   return {
@@ -110,7 +111,7 @@ export function together(causes: readonly Cause[]): Cause[] {
 }
 
 /** Power that stuck units hold back; the others still pass theirs, or nobody knows. */
-const lossOf = (cause: Cause, unitDayWh: number | null): number | null =>
+export const lossOf = (cause: Cause, unitDayWh: number | null): number | null =>
   cause.verdict === 'stuck' && unitDayWh !== null
     ? cause.units.filter((u) => u.position !== null).length * unitDayWh || null
     : null;

@@ -1,0 +1,65 @@
+import type { SiteCondition } from '../../domain/causes/site';
+import type { Tx } from '../db/transaction';
+import { addSiteEvents, type CauseSiteFacts } from '../queries/causes-stored';
+import { gatewaysOf, markGateways } from '../queries/gateways';
+
+/**
+ * Gateways that nobody is heard through while their units should speak, and those that are heard again: an event each,
+ * once. A gateway whose units are all dark is no news: the night silences them.
+ */
+export async function judgeGateways(
+  tx: Tx,
+  site: CauseSiteFacts,
+  condition: SiteCondition,
+  at: Date,
+): Promise<number> {
+  const atS = at.getTime() / 1000;
+  const limitS = 3 * condition.reportIntervalS;
+  const reached = new Map<string, { units: number; silent: number }>();
+  for (const string of condition.strings)
+    for (const slot of string.slots) {
+      if (slot.gateway === null) continue;
+      const of = reached.get(slot.gateway) ?? { units: 0, silent: 0 };
+      of.units++;
+      if (slot.state === 'silent') of.silent++;
+      reached.set(slot.gateway, of);
+    }
+  const gateways = await gatewaysOf(tx, site.id);
+  const fallen: { id: number; name: string; units: number; sinceS: number }[] = [];
+  const back: { id: number; name: string; sinceS: number }[] = [];
+  for (const g of gateways) {
+    const lastS = g.lastHeardS;
+    if (lastS === null) continue;
+    const of = reached.get(g.name);
+    if (g.silentSinceS === null) {
+      if (atS - lastS >= limitS && of && of.silent > 0 && of.silent === of.units)
+        fallen.push({ id: g.id, name: g.name, units: of.units, sinceS: lastS });
+    } else if (lastS > g.silentSinceS) back.push({ id: g.id, name: g.name, sinceS: lastS });
+  }
+  // a site under construction has gateways that come and go: said when it is built
+  const told = site.stage === 'operating' ? fallen : [];
+  if (told.length + back.length === 0) return 0;
+  await markGateways(tx, [
+    ...told.map((g) => ({ id: g.id, silentSinceS: g.sinceS })),
+    ...back.map((g) => ({ id: g.id, silentSinceS: null })),
+  ]);
+  await addSiteEvents(tx, site, [
+    ...told.map((g) => ({
+      at: new Date(g.sinceS * 1000),
+      kind: 'gateway_silent',
+      stringRef: null,
+      detail: {
+        gateway: g.name,
+        units: g.units,
+        follows: 'Whether its units follow a shutdown can not be confirmed until they are heard again.',
+      },
+    })),
+    ...back.map((g) => ({
+      at: new Date(g.sinceS * 1000),
+      kind: 'gateway_back',
+      stringRef: null,
+      detail: { gateway: g.name, units: reached.get(g.name)?.units ?? 0 },
+    })),
+  ]);
+  return told.length + back.length;
+}

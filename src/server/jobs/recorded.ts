@@ -1,0 +1,39 @@
+import { randomUUID } from 'node:crypto';
+import type { Task } from 'graphile-worker';
+import { z } from 'zod';
+import { database } from '../db/pools';
+import { isDatabaseAway } from '../errors';
+import { log } from '../log';
+import { beginRun, endRun } from '../queries/job-runs';
+
+/** This process, as the runs of its jobs name it. */
+const WORKER = `${process.pid}-${randomUUID().slice(0, 8)}`;
+
+const sitePayload = z.object({ siteId: z.int() });
+
+/** What a job did, in counts; nothing worth counting: empty. */
+export type Done = Record<string, number>;
+
+/**
+ * A task that writes down each of its runs: when it began, how it ended, what it did. A failure is written down and
+ * thrown on, so that the queue tries again.
+ */
+export function recorded(task: string, work: (payload: unknown) => Promise<Done>): Task {
+  return async (payload, helpers) => {
+    const db = database('ingest');
+    const siteId = sitePayload.safeParse(payload).data?.siteId ?? null;
+    const { attempts: attempt } = helpers.job;
+    const id = await beginRun(db, { task, siteId, attempt, worker: WORKER, at: new Date() });
+    let done: Done = {};
+    try {
+      done = await work(payload);
+      await endRun(db, id, { at: new Date(), failed: null, done });
+    } catch (error) {
+      const failed = error instanceof Error ? error.message : String(error);
+      if (!isDatabaseAway(error)) log.error({ error, task }, 'a job failed; it is tried again');
+      await endRun(db, id, { at: new Date(), failed: failed.slice(0, 2000), done }).catch(() => undefined);
+      throw error;
+    }
+    if (Object.values(done).some((n) => n > 0)) log.debug({ task, ...done }, 'a job did its work');
+  };
+}

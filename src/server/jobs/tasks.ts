@@ -1,0 +1,81 @@
+import type { CronItem, Task, TaskList } from 'graphile-worker';
+import { z } from 'zod';
+import { database } from '../db/pools';
+import { sendDue } from '../mail/send-outbox';
+import { forgetRunsBefore } from '../queries/job-runs';
+import { judgeAllCauses, judgeSiteCauses } from './judge-causes';
+import { keepDays, mergeLateFrames } from './keep-days';
+import { recorded, type Done } from './recorded';
+import { rollUpClosed, rollUpDirty } from './roll-up';
+
+/**
+ * Every kind of background job: what it does, when, and in which queue (jobs of one queue wait for each other). A job
+ * may be run twice, by several workers, and be killed anywhere: its effects are there once.
+ */
+export interface JobKind {
+  /** For people. */
+  title: string;
+  /** Minutes and hours in UTC, as cron has them; null: only when something asks for it. */
+  cron: string | null;
+  queue: string | null;
+  run: (payload: unknown) => Promise<Done>;
+}
+
+const RUNS_KEPT_MS = 7 * 86_400_000;
+const ofSite = z.object({ siteId: z.int() });
+
+const kinds = {
+  roll_up: {
+    title: 'Sum reports up to quarters and days',
+    cron: '* * * * *',
+    queue: 'roll_up',
+    run: async () => {
+      const now = new Date();
+      const quarters = await rollUpClosed(now);
+      const late = await mergeLateFrames(now);
+      return { quarters, late, redone: await rollUpDirty() };
+    },
+  },
+  causes: {
+    title: 'Find causes at a site when its verdicts change',
+    cron: null,
+    queue: null,
+    run: async (payload) => ({ told: await judgeSiteCauses(ofSite.parse(payload).siteId, new Date()) }),
+  },
+  causes_sweep: {
+    title: 'Look after every open cause',
+    cron: '* * * * *',
+    queue: 'causes_sweep',
+    run: () => judgeAllCauses(() => new Date()),
+  },
+  send_letters: {
+    title: 'Send letters that are due',
+    cron: '* * * * *',
+    queue: 'letters',
+    run: async () => ({ sent: (await sendDue(() => new Date())).sent }),
+  },
+  keep_days: {
+    title: 'Make room for coming days, give up readings past their time',
+    cron: '7 * * * *',
+    queue: 'keep_days',
+    run: async () => {
+      const now = new Date();
+      const dropped = await keepDays(now);
+      const runs = await forgetRunsBefore(database('ingest'), new Date(now.getTime() - RUNS_KEPT_MS));
+      return { dropped, runs };
+    },
+  },
+} satisfies Record<string, JobKind>;
+
+export type TaskName = keyof typeof kinds;
+export const JOBS: Record<TaskName, JobKind> = kinds;
+
+export const TASKS: TaskList = Object.fromEntries(
+  Object.entries(JOBS).map(([task, kind]): [string, Task] => [task, recorded(task, kind.run)]),
+);
+
+export const CRON: CronItem[] = Object.entries(JOBS).flatMap(([task, { cron, queue }]) =>
+  cron === null
+    ? []
+    : [{ task, match: cron, options: { ...(queue !== null && { queueName: queue }), jobKey: task } }],
+);
