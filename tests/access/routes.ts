@@ -4,6 +4,7 @@ import { AS_BUILT_ROUTES } from './routes-as-built';
 import { DESIGN_AND_EQUIPMENT } from './routes-equipment';
 import { IMPORT_SERIALS_ROOF } from './routes-import';
 import { HANDOVER } from './routes-handover';
+import { INGEST_LOGGERS_HISTORY } from './routes-ingest';
 import { PEOPLE_AND_ACCOUNTS } from './routes-people';
 import { SHARED_PAGES } from './routes-share';
 
@@ -14,6 +15,7 @@ export const ROUTES: readonly Route[] = [
   ...AS_BUILT_ROUTES,
   ...DESIGN_AND_EQUIPMENT,
   ...IMPORT_SERIALS_ROOF,
+  ...INGEST_LOGGERS_HISTORY,
   ...HANDOVER,
   ...PEOPLE_AND_ACCOUNTS,
   ...SHARED_PAGES,

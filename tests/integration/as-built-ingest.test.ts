@@ -306,7 +306,7 @@ describe('an as-built that is made while readings come in', () => {
     const { makeLoggerToken, newToken } = await import('../../src/server/services/logger-token');
     const fresh = newToken();
     const id = (await parts()).loggers[0]!.id;
-    await asActor(actor, (tx) => makeLoggerToken(tx, actor, siteId, id, how, fresh));
+    await asActor(actor, (tx) => makeLoggerToken(tx, actor, siteId, id, how, { token: fresh }));
     await expect(TestLogger.connect(sockets, token)).rejects.toThrow('HTTP 401');
     const again = await TestLogger.arrive(sockets, fresh, SERIAL);
     expect(again.roster.strings).toHaveLength(1);

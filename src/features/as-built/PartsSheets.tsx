@@ -12,6 +12,7 @@ import {
 import { counted, power, quantity } from '../../drawings/numbers';
 import type { AsBuilt } from '../../schemas/api/as-built';
 import { nameOf } from '../../schemas/as-built-values';
+import { paths } from '../../schemas/paths';
 import type { Editing } from './PartDialog';
 
 interface Props {
@@ -32,6 +33,7 @@ function Parts<T extends { id: string }>({
   name,
   detail,
   extra,
+  link,
   blocked,
   mayWrite,
   onEdit,
@@ -42,12 +44,25 @@ function Parts<T extends { id: string }>({
   name: (row: T) => string;
   detail: (row: T) => ReactNode;
   extra?: (row: T) => ReactNode;
+  /** A page that says more of them. */
+  link?: { words: string; href: string };
   /** Why none can be added yet. */
   blocked?: string | null;
 } & Pick<Props, 'mayWrite' | 'onEdit'>) {
   const words = PART_WORDS[kind];
   return (
-    <Sheet id={`parts-${kind}`} title={title} level={3}>
+    <Sheet
+      id={`parts-${kind}`}
+      title={title}
+      level={3}
+      aside={
+        link && (
+          <a className="-my-[13px] inline-block py-[13px] text-petrol hover:underline" href={link.href}>
+            {link.words}
+          </a>
+        )
+      }
+    >
       {rows.length === 0 ? (
         <p className="text-ink-2">{blocked ?? `No ${words.many} yet.`}</p>
       ) : (
@@ -119,6 +134,7 @@ export function PartsSheets({ built, mayWrite, onEdit, onToken }: Props) {
         {...common}
         kind="logger"
         title="Loggers"
+        link={{ words: 'Tokens, and what was refused', href: paths.loggers(site.id) }}
         rows={built.loggers}
         name={(l) => l.serial}
         detail={(l) => (

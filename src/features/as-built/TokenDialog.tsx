@@ -1,12 +1,12 @@
 import { useMutation } from '@tanstack/react-query';
 import { useState } from 'react';
+import { TokenShown } from '../../components/logger-token/TokenShown';
 import { Button } from '../../components/ui/Button';
 import { Dialog } from '../../components/ui/Dialog';
 import { Field } from '../../components/ui/Field';
 import { Notice } from '../../components/ui/Notice';
 import { ApiError } from '../../lib/api';
 import { queryClient } from '../../lib/query-client';
-import { paths } from '../../schemas/paths';
 import { asBuiltKey, makeToken } from './queries';
 
 interface Props {
@@ -18,11 +18,10 @@ interface Props {
   onClose: () => void;
 }
 
-/** A logger's token, shown this once: only its hash is kept. */
+/** Makes a logger's token, or shows one that was made with the logger. */
 export function TokenDialog({ site, logger, operating, token: given, onClose }: Props) {
   const client = queryClient();
   const [reason, setReason] = useState('');
-  const [copied, setCopied] = useState(false);
   const make = useMutation(
     {
       mutationFn: () => makeToken(site, logger.id, reason),
@@ -31,10 +30,6 @@ export function TokenDialog({ site, logger, operating, token: given, onClose }: 
     client,
   );
   const token = given ?? make.data?.token ?? null;
-  const copy = async (text: string) => {
-    await navigator.clipboard.writeText(text);
-    setCopied(true);
-  };
   return (
     <Dialog open title={`Token of logger ${logger.serial}`} onClose={onClose}>
       {token === null ? (
@@ -66,30 +61,7 @@ export function TokenDialog({ site, logger, operating, token: given, onClose }: 
           </Button>
         </>
       ) : (
-        <>
-          <p className="mb-3">
-            <strong className="font-semibold">It is shown this once.</strong> Put it into the logger now, or
-            keep it where secrets are kept. If it is lost, make a new one.
-          </p>
-          <p className="mb-1 text-sm text-ink-2">Token</p>
-          <code className="block select-all break-all rounded border border-rule bg-film px-3 py-3 text-[15px]">
-            {token}
-          </code>
-          <p className="mb-1 mt-4 text-sm text-ink-2">The logger reports to</p>
-          <code className="block break-all rounded border border-rule bg-film px-3 py-3 text-[15px]">
-            {typeof window === 'undefined'
-              ? paths.ingest()
-              : `${window.location.protocol === 'https:' ? 'wss' : 'ws'}://${window.location.host}${paths.ingest()}`}
-          </code>
-          <div className="mt-4 flex flex-wrap gap-2">
-            {typeof navigator !== 'undefined' && 'clipboard' in navigator && (
-              <Button weight="primary" onClick={() => void copy(token)}>
-                {copied ? 'Copied' : 'Copy the token'}
-              </Button>
-            )}
-            <Button onClick={onClose}>I have it</Button>
-          </div>
-        </>
+        <TokenShown token={token} onDone={onClose} />
       )}
     </Dialog>
   );

@@ -36,6 +36,8 @@ export function historyTitle(item: HistoryItem): string {
       return `Slots of ${item.of} changed`;
     case 'token_made':
       return `New token for logger ${item.of}`;
+    case 'token_ended':
+      return `Token of logger ${item.of} ended`;
   }
   const part = partOfAction(item.action);
   if (!part) return `${capital(item.action.replaceAll('_', ' '))}: ${item.of}`;
@@ -74,7 +76,7 @@ export interface ChangedField {
 
 /** The fields that an entry tells of; what units did is in the title. */
 export function changedFields(item: HistoryItem): ChangedField[] {
-  if (item.action.startsWith('unit_') || item.action === 'token_made') return [];
+  if (item.action.startsWith('unit_') || item.action.startsWith('token_')) return [];
   const part = partOfAction(item.action);
   const kind = part?.kind ?? null;
   const deleted = part?.done === 'deleted';

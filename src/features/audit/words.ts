@@ -12,6 +12,7 @@ export const AREA_WORDS: Record<(typeof AUDIT_AREAS)[number], string> = {
   shutdown_test: 'shutdown tests',
   handover: 'handover',
   hazard: 'hazards',
+  history: 'earlier readings',
 };
 
 const ACTIONS: Record<string, string> = {
@@ -36,6 +37,9 @@ const ACTIONS: Record<string, string> = {
   'as_built.string_changed': 'changed a string',
   'as_built.slots_changed': 'changed slots',
   'as_built.token_made': 'made a logger token',
+  'as_built.token_ended': 'ended a logger token',
+  'history.imported': 'imported earlier readings',
+  'history.undone': 'took imported readings back',
   'as_built.unit_placed': 'placed a unit',
   'as_built.unit_moved': 'moved a unit',
   'as_built.unit_replaced': 'replaced a unit',

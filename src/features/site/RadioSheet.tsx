@@ -4,6 +4,7 @@ import { Tag } from '../../components/ui/Tag';
 import { SiteTime } from '../../components/ui/Time';
 import { counted } from '../../drawings/numbers';
 import type { SitePage } from '../../schemas/api/site';
+import { paths } from '../../schemas/paths';
 
 const line =
   'flex flex-wrap items-baseline justify-between gap-x-4 border-b border-rule-faint py-2 last:border-b-0';
@@ -39,6 +40,12 @@ export function RadioSheet({ page, now, zone }: { page: SitePage; now: string; z
           </li>
         ))}
       </ul>
+      <a
+        className="target inline-flex items-center text-petrol hover:underline"
+        href={paths.loggers(site.id)}
+      >
+        Tokens of the loggers, and what was refused
+      </a>
       {gateways.some((g) => g.silent) && (
         <p className="mt-2 text-sm text-ink-2">
           Whether units behind a silent gateway follow a shutdown can't be confirmed until it is heard again.

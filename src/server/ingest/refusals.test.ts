@@ -3,20 +3,16 @@ import { kindOf } from './refusals';
 
 describe('what is counted together', () => {
   it.each([
+    ['frames[3].state[11]', 'is 9; 0 to 4 are known', 'frames[40].state[2]', 'is 77; 0 to 4 are known'],
+    ['at[0]', "is 4000 s ahead of the server's clock", 'at[7]', "is 301 s ahead of the server's clock"],
     [
-      ['frames[3].state[11]', 'is 9; 0 to 4 are known'],
-      ['frames[40].state[2]', 'is 77; 0 to 4 are known'],
+      'rows[0].inverter',
+      '"Inverter 9" is not in the roster',
+      'rows[3].inverter',
+      '"Ω\u0000" is not in the roster',
     ],
-    [
-      ['at[0]', "is 4000 s ahead of the server's clock; set the logger's clock"],
-      ['at[7]', "is 301 s ahead of the server's clock; set the logger's clock"],
-    ],
-    [
-      ['rows[0].inverter', '"Inverter 9" is not in the roster'],
-      ['rows[3].inverter', '"Ω\u0000" is not in the roster'],
-    ],
-  ] as const)('%j and %j', (one, other) => {
-    expect(kindOf(...one)).toBe(kindOf(...other));
+  ])('%s: %s, and %s: %s', (field, reason, otherField, otherReason) => {
+    expect(kindOf(field, reason)).toBe(kindOf(otherField, otherReason));
   });
   it('keeps apart what is wrong with another field, or in another way', () => {
     const kinds = [

@@ -50,7 +50,7 @@ export async function addFromForm(
   const made = await addPart(tx, actor, site.id, { kind, values }, how);
   if (kind !== 'logger') return { ids: [made.ref], token: null };
   const token = newToken();
-  await makeLoggerToken(tx, actor, site.id, made.ref, how, token);
+  await makeLoggerToken(tx, actor, site.id, made.ref, how, { token });
   return { ids: [made.ref], token };
 }
 

@@ -10,7 +10,7 @@ export const POST = endpoint(
     const site = found(await visibleSite(tx, params.site), 'site');
     const token = newToken();
     const how = { reason: body.reason, source: 'forms', address: context.clientAddress };
-    await makeLoggerToken(tx, actor, site.id, params.logger, how, token);
+    await makeLoggerToken(tx, actor, site.id, params.logger, how, { token });
     return { token };
   },
 );
