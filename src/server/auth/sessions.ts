@@ -138,7 +138,7 @@ export const cookieName = (line: string): string => line.split('=')[0] ?? '';
  */
 export async function replacingCookies(before: string | null, cookie: string): Promise<string[]> {
   const blanks = await endSession(before);
-  return [...blanks.filter((line) => cookieName(line) !== cookieName(cookie)), cookie];
+  return [cookie, ...blanks.filter((line) => cookieName(line) !== cookieName(cookie))];
 }
 
 /** Ends a session and returns the blank cookies that clear it in the browser. */
