@@ -125,7 +125,7 @@ export async function nowRows(
        select sl.string_id, array_agg(sl.position order by sl.position) as positions,
               array_agg(u.serial order by sl.position) as serials,
               array_agg(sl.roof_place order by sl.position) as roof_places,
-              array_agg(coalesce(extract(epoch from p.placed_from)::int4, 0) order by sl.position) as placed_at,
+              array_agg(coalesce(ceil(extract(epoch from p.placed_from))::int4, 0) order by sl.position) as placed_at,
               min(sl.module_type_id) as module_type_id
        from slot sl
        left join placement p on p.slot_id = sl.id and p.placed_to is null
