@@ -64,6 +64,17 @@ export const amperes = (value: Value): string =>
 export const celsius = (value: Value): string => quantity(value, '°C');
 export const decibelMilliwatts = (value: Value): string => quantity(value, 'dBm');
 export const irradiance = (value: Value): string => quantity(value, 'W/m²');
+/** Money in a currency of ISO 4217: whole units from a hundred up, smaller sums with their parts. */
+export function money(value: Value, currency: string): string {
+  if (!known(value)) return UNKNOWN;
+  const text = new Intl.NumberFormat('en-GB', {
+    style: 'currency',
+    currency,
+    currencyDisplay: 'narrowSymbol',
+    ...(Math.abs(value) >= 100 ? { maximumFractionDigits: 0 } : {}),
+  }).format(Math.abs(value));
+  return value < 0 && /[1-9]/.test(text) ? `−${text}` : text;
+}
 /** A ratio 0 … 1 as per cent. */
 export const percent = (ratio: Value, digits = 0): string =>
   quantity(known(ratio) ? ratio * 100 : null, '%', digits);

@@ -53,7 +53,13 @@ export const paths = {
   lowOutput: () => '/low-output',
   cases: () => '/cases',
   caseFile: (caseRef: string) => `/cases/${caseRef}`,
-  caseNew: (site?: string) => (site ? `/cases/new?site=${site}` : '/cases/new'),
+  /** A new case: from a cause, from a string (and a position of it), for a site, or from nothing. */
+  caseNew: (from: { cause?: string; string?: string; position?: number; site?: string } = {}) => {
+    const search = new URLSearchParams(
+      Object.entries(from).flatMap(([key, value]) => (value === undefined ? [] : [[key, String(value)]])),
+    ).toString();
+    return search ? `/cases/new?${search}` : '/cases/new';
+  },
   loggers: (site: string) => `/sites/${site}/loggers`,
   /** Readings of the time before Wakeline, from a file. */
   historyImport: (site: string) => `/sites/${site}/history-import`,
@@ -91,6 +97,19 @@ export const paths = {
     stringHistoryCsv: (string: string) => `/api/strings/${string}/history.csv`,
     stringUnits: (string: string) => `/api/strings/${string}/units`,
     stringUnitsCsv: (string: string) => `/api/strings/${string}/units.csv`,
+    /** The string as it stood at one minute. */
+    stringMoment: (string: string) => `/api/strings/${string}/moment`,
+    stringHeat: (string: string) => `/api/strings/${string}/heat`,
+    stringHeatCsv: (string: string) => `/api/strings/${string}/heat.csv`,
+    stringLoop: (string: string) => `/api/strings/${string}/loop`,
+    stringLoopCsv: (string: string) => `/api/strings/${string}/loop.csv`,
+    stringExplanations: (string: string) => `/api/strings/${string}/explanations`,
+    /** Notes on the time axis. */
+    annotations: (site: string) => `/api/sites/${site}/annotations`,
+    annotation: (site: string, annotation: string) => `/api/sites/${site}/annotations/${annotation}`,
+    lowOutputCsv: () => '/api/low-output.csv',
+    savedViews: () => '/api/saved-views',
+    savedView: (view: string) => `/api/saved-views/${view}`,
     rollCall: (site: string) => `/api/sites/${site}/roll-call`,
     rollCallCsv: (site: string) => `/api/sites/${site}/roll-call/units.csv`,
     rollCallStop: (site: string) => `/api/sites/${site}/roll-call/stop`,
@@ -176,6 +195,17 @@ export const paths = {
     shutdown: () => '/api/shutdown',
     shutdownCsv: () => '/api/shutdown.csv',
     customer: (site: string) => `/api/my-site/${site}`,
+    /** What looks wrong to a customer: a case of their own words. */
+    customerReports: (site: string) => `/api/my-site/${site}/reports`,
+    cases: () => '/api/cases',
+    casesCsv: () => '/api/cases.csv',
+    caseDraft: () => '/api/cases/draft',
+    caseFile: (caseRef: string) => `/api/cases/${caseRef}`,
+    caseComments: (caseRef: string) => `/api/cases/${caseRef}/comments`,
+    casePhotos: (caseRef: string) => `/api/cases/${caseRef}/photos`,
+    /** What whoever is called next gets: one PDF, or a ZIP with the readings and photos beside it. */
+    casePack: (caseRef: string, form: 'pdf' | 'zip') => `/api/cases/${caseRef}/evidence.${form}`,
+    siteCases: (site: string) => `/api/sites/${site}/cases`,
     /** For loggers that report by HTTPS. */
     v1Ingest: () => '/api/v1/ingest',
     v1IngestRoster: () => '/api/v1/ingest/roster',

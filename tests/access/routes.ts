@@ -6,6 +6,7 @@ import { IMPORT_SERIALS_ROOF } from './routes-import';
 import { HANDOVER } from './routes-handover';
 import { INGEST_LOGGERS_HISTORY } from './routes-ingest';
 import { PEOPLE_AND_ACCOUNTS } from './routes-people';
+import { FIGURES } from './routes-figures';
 import { SHARED_PAGES } from './routes-share';
 
 export type { Route, Target } from './route';
@@ -19,6 +20,7 @@ export const ROUTES: readonly Route[] = [
   ...HANDOVER,
   ...PEOPLE_AND_ACCOUNTS,
   ...SHARED_PAGES,
+  ...FIGURES,
   // pages
   get('index.astro', 'fleet.read', 'nothing', () => '/'),
   get('shutdown.astro', 'shutdown.read', 'nothing', () => '/shutdown'),

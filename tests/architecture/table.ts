@@ -18,6 +18,7 @@ export const FEATURES = [
   'shutdown',
   'cases',
   'equipment',
+  'figures',
   'people',
   'customer',
   'readings',

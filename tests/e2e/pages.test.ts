@@ -7,6 +7,7 @@ import { hydrated, settled, startBrowser } from '../support/browser';
 import { testDatabase, type TestDatabase } from '../support/database';
 import { PASSWORD, testFleet, type TestFleet } from '../support/fleet';
 import { signInAt, startSite, type RunningSite } from '../support/server';
+import { writeDays } from '../support/days';
 import { command, stand } from '../support/standing';
 import { ROUTES } from '../access/routes';
 
@@ -36,6 +37,13 @@ beforeAll(async () => {
   );
   const [zone] = [...fleet.site(SCHOOL).zones.keys()];
   if (zone) await command(db.owner, fleet.site(SCHOOL), zone, 'initiator', new Date(at.getTime() - 600_000));
+  await writeDays(db.owner, fleet.site(CLINIC).id, {
+    from: new Date(at.getTime() - 400 * 86_400_000).toISOString().slice(0, 10),
+    count: 401,
+    nameplate: 40_000,
+    sun: 3,
+    lost: 20,
+  });
   for (const [token, kiosk] of [
     [SHARED, false],
     [SCREEN, true],
@@ -270,6 +278,19 @@ const PAGES: readonly Shown[] = [
   { name: 'the phone without a site', role: null, path: () => '/capture', file: 'capture/index.astro' },
   { name: 'people', role: 'manager', path: () => '/people', file: 'people.astro' },
   { name: 'who did what', role: 'manager', path: () => '/audit', file: 'audit.astro' },
+  { name: 'figures', role: 'analyst', path: () => '/figures', file: 'figures.astro' },
+  {
+    name: 'figures of a site',
+    role: 'manager',
+    path: () => `/sites/${refOf(CLINIC)}/figures`,
+    file: 'sites/[site]/figures.astro',
+  },
+  {
+    name: 'a year of a site',
+    role: 'analyst',
+    path: () => `/sites/${refOf(CLINIC)}/figures?period=2025`,
+    file: 'sites/[site]/figures.astro',
+  },
   { name: 'letters', role: 'manager', path: () => '/mail', file: 'mail.astro' },
   { name: 'an account', role: 'analyst', path: () => '/account', file: 'account.astro' },
   { name: 'the account of an owner', role: 'customer', path: () => '/account', file: 'account.astro' },

@@ -16,6 +16,7 @@ const day = fc.array(record, { minLength: 96, maxLength: 96 });
 /** The sums of a day as the roll-up makes them, from the same quarters. */
 function sumsOf(date: string, records: readonly YieldRecord[]): DaySums {
   const light: DayLight = {
+    days: 1,
     quartersDue: records.length,
     quartersLit: 0,
     insolation: 0,
@@ -45,6 +46,7 @@ function sumsOf(date: string, records: readonly YieldRecord[]): DaySums {
   }
   return {
     day: date,
+    days: 1,
     energyAc,
     energyDc: energyAc,
     nameplate: P0,
@@ -80,6 +82,31 @@ describe('figures from sums of days', () => {
         near(got.completenessTemperature, want.completenessWithTemperature);
       }),
       { numRuns: 60 },
+    );
+  });
+
+  it('are the same from days summed into one entry', () => {
+    fc.assert(
+      fc.property(day, day, (first, second) => {
+        const [a, b] = [sumsOf('2026-06-01', first), sumsOf('2026-06-02', second)];
+        const whole: DaySums = {
+          ...a,
+          days: 2,
+          energyAc: a.energyAc + b.energyAc,
+          energyDc: a.energyDc + b.energyDc,
+          complete: a.complete + b.complete,
+          lostMinutes: a.lostMinutes + b.lostMinutes,
+          lostMinutesGrid: a.lostMinutesGrid + b.lostMinutesGrid,
+          light: Object.fromEntries(
+            Object.entries(a.light!).map(([k, v]) => [k, v + b.light![k as keyof DayLight]]),
+          ) as unknown as DayLight,
+        };
+        const [apart, together] = [figuresOf([a, b], 3, 20), figuresOf([whole], 3, 20)];
+        for (const key of Object.keys(apart) as (keyof typeof apart)[])
+          if (apart[key] === null) expect(together[key]).toBeNull();
+          else expect(together[key]).toBeCloseTo(apart[key], 6);
+      }),
+      { numRuns: 40 },
     );
   });
 

@@ -1,16 +1,18 @@
 /** Yields and ratios of any span from sums of its days, by IEC 61724-1 as `yields` has them from records. */
 
-/** One local day of one site. Energies Wh, insolation Wh/m²; null: the day has no sensor in the plane, or is older. */
+/** One local day of one site, or several days summed. Energies Wh, insolation Wh/m²; null: the day has no sensor in the plane, or is older. */
 export interface DaySums {
-  /** The site's calendar day, yyyy-mm-dd. */
+  /** The site's calendar day, yyyy-mm-dd; of several, the first. */
   day: string;
+  /** How many days it stands for; then `nameplate` is their mean, and insolation is weighted by nameplate. */
+  days: number;
   energyAc: number;
   energyDc: number;
   /** W at STC. */
   nameplate: number | null;
   /** 1/K */
   gammaPmp: number | null;
-  /** Share of the reports due in daylight that came, 0 … 1. */
+  /** Share of the reports due in daylight that came, 0 … 1; of several days, the sum. */
   complete: number;
   lostMinutes: number;
   lostMinutesGrid: number;
@@ -19,6 +21,7 @@ export interface DaySums {
 
 /** Sums over the quarters of a day that have irradiance and power both. */
 export interface DayLight {
+  days: number;
   quartersDue: number;
   quartersLit: number;
   insolation: number;
@@ -45,7 +48,7 @@ export interface Figures {
   energyDcKWh: number;
   /** kWh/kWp over days with a known nameplate; null: none. */
   specificYieldKWhKWp: number | null;
-  /** kWh/m² in the plane over the quarters with power. */
+  /** kWh/m² in the plane over the quarters with power, weighted by nameplate where that changed. */
   insolationKWhM2: number | null;
   referenceYieldH: number | null;
   arrayYieldH: number | null;
@@ -79,7 +82,7 @@ const over = (above: number, below: number): number | null => (below > 0 ? above
  * Figures of a span. Every ratio counts only quarters that have all that it needs, so that a gap of the light never
  * makes a plant look good; `nameplate` may differ from day to day.
  *
- * @param days at most one entry a day; others of the span count as missing
+ * @param days each day at most once; others of the span count as missing
  * @param asked number of days of the span, ≥ `days.length`, ≥ 1
  * @param temperatureModuleAnnual °C; without it the ratio at annual temperature is null
  * @throws RangeError when fewer days were asked for than are given
@@ -89,17 +92,19 @@ export function figuresOf(
   asked: number,
   temperatureModuleAnnual?: number | null,
 ): Figures {
-  if (!(asked >= Math.max(1, days.length)))
-    throw new RangeError(`asked must be at least the number of days, ${days.length}, but is ${asked}`);
+  const there = sum(days, (d) => d.days);
+  if (!(asked >= Math.max(1, there)))
+    throw new RangeError(`asked must be at least the number of days, ${there}, but is ${asked}`);
   const named = days.filter((d) => d.nameplate !== null && d.nameplate > 0);
   const lit = days.flatMap((d) =>
     d.light && d.nameplate !== null && d.nameplate > 0
       ? [{ ...d.light, p0: d.nameplate, gamma: d.gammaPmp ?? 0 }]
       : [],
   );
-  const p0Sum = sum(named, (d) => d.nameplate ?? 0);
+  const p0Days = sum(named, (d) => (d.nameplate ?? 0) * d.days);
+  const litDays = sum(lit, (d) => d.days);
   const reference = sum(lit, (d) => (d.p0 * d.insolation) / 1000); // Wh at STC
-  const p0Mean = lit.length > 0 ? sum(lit, (d) => d.p0) / lit.length : 0;
+  const p0Mean = litDays > 0 ? sum(lit, (d) => d.p0 * d.days) / litDays : 0;
   const warm = sum(lit, (d) => (d.p0 * d.insolationWarm) / 1000);
   const at = (temperature: number): number =>
     sum(
@@ -112,15 +117,15 @@ export function figuresOf(
   const minutesLit = sum(lit, (d) => d.minutesLit);
   const lostMinutes = sum(days, (d) => d.lostMinutes);
   const lostMinutesGrid = sum(days, (d) => d.lostMinutesGrid);
-  const hours = (energy: number): number | null => (lit.length > 0 && p0Mean > 0 ? energy / p0Mean : null);
+  const hours = (energy: number): number | null => (p0Mean > 0 ? energy / p0Mean : null);
   const due = sum(lit, (d) => d.quartersDue);
-  const dueShare = lit.length / asked;
+  const dueShare = litDays / asked;
   return {
-    days: days.length,
+    days: there,
     energyKWh: sum(days, (d) => d.energyAc) / 1000,
     energyDcKWh: sum(days, (d) => d.energyDc) / 1000,
-    specificYieldKWhKWp: over(sum(named, (d) => d.energyAc) * named.length, p0Sum),
-    insolationKWhM2: lit.length > 0 ? sum(lit, (d) => d.insolation) / 1000 : null,
+    specificYieldKWhKWp: over(sum(named, (d) => d.energyAc) * sum(named, (d) => d.days), p0Days),
+    insolationKWhM2: litDays > 0 ? reference / p0Mean : null,
     referenceYieldH: hours(reference),
     arrayYieldH: hours(sum(lit, (d) => d.energyDcLit)),
     finalYieldH: hours(sum(lit, (d) => d.energyAcLit)),

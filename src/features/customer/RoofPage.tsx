@@ -8,7 +8,7 @@ import { clocksDiffer, useReaderZone } from '../../components/ui/reader-zone';
 import { paths } from '../../schemas/paths';
 import type { CustomerSite } from '../../schemas/api/customer';
 import { careWords, lifeCard, monthCard, switchWords, testWords, workingTimeCard } from './cards';
-import { FigureSheet } from './FigureSheet';
+import { FigureSheet } from '../../components/ui/FigureSheet';
 import { TodaySheet } from './TodaySheet';
 import { customerWords } from './words';
 

@@ -4,7 +4,7 @@ import { clocksDiffer, useReaderZone } from '../../components/ui/reader-zone';
 import { clock, zoneName } from '../../drawings/times';
 import type { SharedSite } from '../../schemas/api/share';
 import { lifeCard, monthCard, yearCard } from './cards';
-import { FigureSheet } from './FigureSheet';
+import { FigureSheet } from '../../components/ui/FigureSheet';
 import { TodaySheet } from './TodaySheet';
 import { useShared } from './use-shared';
 import { customerWords } from './words';

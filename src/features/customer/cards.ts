@@ -1,15 +1,10 @@
+import type { Card } from '../../components/ui/FigureSheet';
 import { counted, energy, percent } from '../../drawings/numbers';
 import { longDate } from '../../drawings/times';
 import type { CustomerSite } from '../../schemas/api/customer';
 import type { SharedSite } from '../../schemas/api/share';
 
 /** Words of the cards under the day's curve: month, life, working time, last shutdown test, who looks after it. */
-
-export interface Card {
-  label: string;
-  figure: string;
-  note: string;
-}
 
 const hours = (minutes: number): string =>
   minutes < 90 ? `${Math.round(minutes)} min` : `${Math.round(minutes / 60)} h`;

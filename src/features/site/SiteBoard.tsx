@@ -84,6 +84,12 @@ export function SiteBoard({ initial, events, kind: initialKind }: Props) {
         >
           Who is in which string
         </a>
+        <a
+          className="target inline-flex items-center text-petrol hover:underline"
+          href={paths.siteFigures(id)}
+        >
+          Figures
+        </a>
       </nav>
       <NotRead
         error={error}

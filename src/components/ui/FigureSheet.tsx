@@ -1,5 +1,11 @@
-import { Sheet } from '../../components/ui/Sheet';
-import type { Card } from './cards';
+import { Sheet } from './Sheet';
+
+/** What one figure says: its name, the figure, and what it means. */
+export interface Card {
+  label: string;
+  figure: string;
+  note: string;
+}
 
 /** One figure with what it is and what it means. */
 export function FigureSheet({ card }: { card: Card }) {

@@ -1,0 +1,197 @@
+import { ButtonLink } from '../../components/ui/Button';
+import { FigureSheet, type Card } from '../../components/ui/FigureSheet';
+import { Heading } from '../../components/ui/Heading';
+import { Notice } from '../../components/ui/Notice';
+import { Sheet } from '../../components/ui/Sheet';
+import { Table } from '../../components/ui/Table';
+import { monthName } from '../../domain/output/period';
+import { DayCalendar, YearCalendar, type CalendarDay } from '../../drawings/DayCalendar';
+import { LossBars, type LossBar } from '../../drawings/LossBars';
+import { energy, number, percent, quantity } from '../../drawings/numbers';
+import { withQuery } from '../../lib/api';
+import type { SiteFigures } from '../../schemas/api/figures';
+import { paths } from '../../schemas/paths';
+import { PeriodPicker } from './PeriodPicker';
+import { YearOnYear } from './YearOnYear';
+
+interface Props {
+  f: SiteFigures;
+  words: {
+    finding: string;
+    sentence: string;
+    cards: Card[];
+    bars: LossBar[];
+    days: CalendarDay[];
+    ofDays: string;
+  };
+}
+
+/** A site's month or year: what it made, where the rest went, day by day and against the year before. */
+export function SiteFiguresPage({ f, words }: Props) {
+  const { finding, sentence, days, bars, ofDays } = words;
+  const month = f.period.kind === 'month';
+  return (
+    <>
+      <Heading
+        crumbs={[
+          { label: 'Figures', href: withQuery(paths.figures(), { period: f.period.key }) },
+          { label: f.site.name, href: paths.site(f.site.id) },
+          { label: f.period.label },
+        ]}
+        finding={finding}
+        sentence={sentence}
+        actions={
+          f.elapsed && (
+            <>
+              {month && (
+                <ButtonLink href={withQuery(paths.api.siteReport(f.site.id), { month: f.period.key })}>
+                  Month report, PDF
+                </ButtonLink>
+              )}
+              <ButtonLink href={withQuery(paths.api.siteFiguresCsv(f.site.id), { period: f.period.key })}>
+                Days, CSV
+              </ButtonLink>
+            </>
+          )
+        }
+      />
+      <PeriodPicker path={paths.siteFigures(f.site.id)} period={f.period} today={f.today} />
+      {f.now && f.now.days > 0 ? (
+        <div className="grid gap-5">
+          <div className="grid gap-5 sm:grid-cols-2 lg:grid-cols-3">
+            {words.cards.map((card) => (
+              <FigureSheet key={card.label} card={card} />
+            ))}
+          </div>
+          <Sheet
+            id="losses"
+            title="Where the light went"
+            aside="estimates; quarters of an hour with light and power"
+          >
+            {bars.length > 0 ? (
+              <LossBars bars={bars} />
+            ) : (
+              <p className="text-ink-2">
+                No sensor measured the light in the plane, so nothing can be said of what the plant could have
+                made.
+              </p>
+            )}
+            <Losses f={f} />
+          </Sheet>
+          <Sheet id="calendar" title="Day by day" aside="kWh/kWp; the deeper, the more of the best day">
+            {month ? (
+              <DayCalendar days={days} caption={`Days of ${f.period.label}`} />
+            ) : (
+              <YearCalendar
+                days={days}
+                label={`Days of ${f.period.label}. ${ofDays}`}
+                monthLabel={monthName}
+              />
+            )}
+            <p className="mt-3 text-sm text-ink-2">
+              {ofDays} A rust edge marks a day with missing data or lost light.
+            </p>
+          </Sheet>
+          <YearOnYear months={f.months} year={Number(f.period.key.slice(0, 4))} today={f.today} />
+          <DayTable f={f} />
+          <p className="max-w-[76ch] text-sm text-ink-2">
+            Yields and ratios follow IEC 61724-1. Each counts only quarters of an hour that have all it needs;
+            how much that was stands beside it. Light is what the sensor in the plane measures: strings in
+            other planes are measured by it too. Losses of causes are estimates and may overlap with dirt and
+            shade.
+          </p>
+        </div>
+      ) : (
+        <Notice kind="empty" title={finding}>
+          {sentence}
+        </Notice>
+      )}
+    </>
+  );
+}
+
+function Losses({ f }: { f: SiteFigures }) {
+  if (f.losses.length === 0) return null;
+  return (
+    <ul className="mt-5 divide-y divide-rule-faint border-t border-rule-faint">
+      {f.losses.slice(0, 12).map((l) => (
+        <li key={l.cause} className="flex flex-wrap items-center justify-between gap-x-4">
+          <a
+            href={paths.cause(l.cause)}
+            className="inline-flex min-h-[44px] items-center text-petrol hover:underline"
+          >
+            {l.headline}
+          </a>
+          <span className="tabular-nums text-ink-2">
+            {l.kWh > 0 ? `−${energy(l.kWh * 1000)}` : 'loss not known'}
+            {l.closedAt ? ', over' : ', still there'}
+          </span>
+        </li>
+      ))}
+    </ul>
+  );
+}
+
+function DayTable({ f }: { f: SiteFigures }) {
+  return (
+    <Sheet id="days" title="The days as a table" flush>
+      <details>
+        <summary className="target cursor-pointer text-petrol">{number(f.days.length)} days</summary>
+        <Table
+          caption={`Days of ${f.period.label}`}
+          rows={f.days}
+          rowKey={(d) => d.day}
+          columns={[
+            { key: 'day', label: 'Day', cell: (d) => d.day },
+            {
+              key: 'energy',
+              label: 'Energy',
+              numeric: true,
+              cell: (d) => energy(d.figures.energyKWh * 1000),
+            },
+            {
+              key: 'yield',
+              label: 'kWh/kWp',
+              numeric: true,
+              cell: (d) => number(d.figures.specificYieldKWhKWp, 2),
+            },
+            {
+              key: 'ratio',
+              label: 'Ratio',
+              numeric: true,
+              cell: (d) => number(d.figures.performanceRatio, 3),
+            },
+            {
+              key: 'stc',
+              label: 'At 25 °C',
+              numeric: true,
+              from: 'md',
+              cell: (d) => number(d.figures.performanceRatioStc, 3),
+            },
+            {
+              key: 'light',
+              label: 'kWh/m²',
+              numeric: true,
+              from: 'sm',
+              cell: (d) => number(d.figures.insolationKWhM2, 2),
+            },
+            {
+              key: 'lost',
+              label: 'Lost',
+              numeric: true,
+              from: 'md',
+              cell: (d) => quantity(d.figures.lostMinutes, 'min'),
+            },
+            {
+              key: 'data',
+              label: 'Data',
+              numeric: true,
+              from: 'sm',
+              cell: (d) => percent(d.figures.completeness),
+            },
+          ]}
+        />
+      </details>
+    </Sheet>
+  );
+}

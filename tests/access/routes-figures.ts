@@ -1,0 +1,34 @@
+import { get, type Route } from './route';
+
+const NOBODY = '00000000-0000-4000-8000-000000000000';
+
+/** Routes of energy, yields and prices. */
+export const FIGURES: readonly Route[] = [
+  get('figures.astro', 'figures.read', 'nothing', () => '/figures'),
+  get('api/figures.csv.ts', 'figures.read', 'nothing', () => '/api/figures.csv?period=2026-10'),
+  get('sites/[site]/figures.astro', 'figures.read', 'site', (t) => `/sites/${t.site}/figures`),
+  get('api/sites/[site]/figures.csv.ts', 'figures.read', 'site', (t) => `/api/sites/${t.site}/figures.csv`),
+  get(
+    'api/sites/[site]/month-report.pdf.ts',
+    'figures.read',
+    'site',
+    (t) => `/api/sites/${t.site}/month-report.pdf?month=2026-10`,
+  ),
+  {
+    file: 'api/sites/[site]/tariffs/index.ts',
+    method: 'POST',
+    permission: 'tariff.write',
+    of: 'site',
+    path: (t) => `/api/sites/${t.site}/tariffs`,
+    body: { from: 'no day', priceKWh: 0.3 },
+    served: [422],
+  },
+  {
+    file: 'api/sites/[site]/tariffs/[tariff].ts',
+    method: 'DELETE',
+    permission: 'tariff.write',
+    of: 'site',
+    path: (t) => `/api/sites/${t.site}/tariffs/${NOBODY}`,
+    served: [404],
+  },
+];
