@@ -1,4 +1,5 @@
 import { defineConfig } from 'vitest/config';
+import Order from './tests/setup/order';
 
 const noise = 'tests/setup/console.ts';
 const database = 'tests/setup/database.ts';
@@ -6,7 +7,8 @@ const build = 'tests/setup/build.ts';
 
 export default defineConfig({
   test: {
-    maxWorkers: 2,
+    maxWorkers: 4, // of two cores: journeys mostly wait, for plants and for the server
+    sequence: { sequencer: Order },
     restoreMocks: true,
     testTimeout: 60_000, // no test is about speed, and machines differ
     hookTimeout: 120_000,
@@ -29,9 +31,6 @@ export default defineConfig({
         test: {
           name: 'architecture',
           include: ['tests/architecture/**/*.test.ts'],
-          isolate: false,
-          fileParallelism: false,
-          sequence: { groupOrder: 1 }, // projects with workers of their own number run one after the other
           setupFiles: [noise],
         },
       },
@@ -57,8 +56,7 @@ export default defineConfig({
         extends: true,
         test: {
           name: 'access',
-          include: ['tests/access/**/*.test.ts'],
-          sequence: { groupOrder: 2 },
+          include: ['tests/access/**/*.test.ts', 'tests/attacks/**/*.test.ts'],
           setupFiles: [noise],
           globalSetup: [database, build],
         },
@@ -70,7 +68,6 @@ export default defineConfig({
           include: ['tests/e2e/**/*.test.ts'],
           setupFiles: [noise],
           globalSetup: [database, build],
-          sequence: { groupOrder: 2 },
           retry: 1, // a browser on a busy machine may miss its moment once, not twice
           testTimeout: 240_000,
           hookTimeout: 240_000,

@@ -1,5 +1,8 @@
 /// <reference types="astro/client" />
 
+/** Put in by server/host.ts: whether this is `astro dev`. */
+declare const WAKELINE_DEVELOPMENT: boolean;
+
 declare namespace App {
   interface Locals {
     requestId: string;

@@ -8,11 +8,13 @@ import { sameOrigin } from './server/http/origin';
 import { problem } from './server/http/problem';
 
 const SAFE = new Set(['GET', 'HEAD', 'OPTIONS']);
+/** Addresses that are secrets and only read: the router would write one into its log that is asked for otherwise. */
+const SECRET_AND_READ = /^\/(api\/)?shared\//;
 
 /** What every answer says, refusals of this file included, unless it says so itself. */
 function finish(response: Response, locals: App.Locals): Response {
   const isPage = response.headers.get('content-type')?.startsWith('text/html') ?? false;
-  const headers = answerHeaders(config(), { isPage, doors: locals.doors, development: import.meta.env.DEV });
+  const headers = answerHeaders(config(), { isPage, doors: locals.doors, development: WAKELINE_DEVELOPMENT });
   for (const [name, value] of Object.entries(headers))
     if (!response.headers.has(name)) response.headers.set(name, value);
   if (isPage) response.headers.set('cache-control', 'private, no-store');
@@ -35,6 +37,12 @@ export const onRequest = defineMiddleware(async (context, next) => {
         new AppError('forbidden', { message: 'The request came from another site.' }),
         locals.requestId,
       ),
+      locals,
+    );
+
+  if (!SAFE.has(request.method) && SECRET_AND_READ.test(context.url.pathname))
+    return finish(
+      problem(new AppError('not_found', { message: 'A shared page is only read.' }), locals.requestId),
       locals,
     );
 

@@ -57,6 +57,12 @@ export default function host(): AstroIntegration {
     ...base,
     hooks: {
       ...base.hooks,
+      'astro:config:setup': (setup) => {
+        // not Astro's own word for it, which a build that a test runner starts takes from the runner
+        const development = setup.command === 'dev';
+        setup.updateConfig({ vite: { define: { WAKELINE_DEVELOPMENT: String(development) } } });
+        return base.hooks['astro:config:setup']?.(setup);
+      },
       'astro:config:done': (done) =>
         base.hooks['astro:config:done']?.({
           ...done,

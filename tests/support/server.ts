@@ -3,6 +3,8 @@ import { fileURLToPath } from 'node:url';
 import { freePort } from '../../src/server/up/processes.mjs';
 import type { TestDatabase } from './database';
 
+/** Of what a process says: a whole journey at its most talkative. */
+const KEPT_CHARACTERS = 4_000_000;
 const SERVE = fileURLToPath(new URL('../../src/server/serve.mjs', import.meta.url));
 
 export interface RunningSite {
@@ -37,7 +39,7 @@ export async function startSite(db: TestDatabase, env: Record<string, string> = 
     execArgv: [],
   });
   let said = '';
-  const hear = (chunk: Buffer) => (said = (said + chunk.toString()).slice(-20_000));
+  const hear = (chunk: Buffer) => (said = (said + chunk.toString()).slice(-KEPT_CHARACTERS));
   child.stdout?.on('data', hear);
   child.stderr?.on('data', hear);
   const ended = new Promise<void>((resolve) => child.once('exit', () => resolve()));
