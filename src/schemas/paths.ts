@@ -196,6 +196,8 @@ export const paths = {
     shutdownCsv: () => '/api/shutdown.csv',
     customer: (site: string) => `/api/my-site/${site}`,
     /** What looks wrong to a customer: a case of their own words. */
+    customerLetter: (site: string) => `/api/my-site/${site}/letter`,
+    customerMonth: (site: string, month: string) => `/api/my-site/${site}/month-report.pdf?month=${month}`,
     customerReports: (site: string) => `/api/my-site/${site}/reports`,
     cases: () => '/api/cases',
     casesCsv: () => '/api/cases.csv',

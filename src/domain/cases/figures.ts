@@ -9,6 +9,8 @@ export interface FiguresSlot {
   verdict: Verdict | null;
   /** V, output. */
   voltage: number | null;
+  /** V, module side. */
+  voltageIn: number | null;
   /** V that it should give if it were passing. */
   expected: number | null;
   assumed: boolean;
@@ -65,103 +67,3 @@ export interface CaseFigures {
 
 /** The most strings whose units are kept one by one: more make a case's figures unreadable. */
 export const STRINGS_WITH_UNITS = 12;
-
-const one = (value: number, digits = 1): string => value.toFixed(digits);
-const volts = (v: number | null): string => (v === null ? 'not known' : `${one(v)} V`);
-const power = (w: number | null): string =>
-  w === null ? 'not known' : w >= 1000 ? `${one(w / 1000, 2)} kW` : `${one(w, 0)} W`;
-const energy = (wh: number | null): string =>
-  wh === null ? 'not known' : wh >= 1000 ? `${one(wh / 1000, 2)} kWh` : `${one(wh, 0)} Wh`;
-
-const LIGHT_WORDS: Record<LightNow, string> = { light: 'daylight', dim: 'dawn or dusk', dark: 'dark' };
-
-/** "12 of 14 pass, 2 stuck"; for strings whose units say nothing, that. */
-export function unitsInWords(s: FiguresString): string {
-  if (s.shutdownOnly) return 'units tell nothing themselves';
-  const parts = [`${s.passing} of ${s.units} pass`];
-  if (s.notShuttingDown > 0) parts.push(`${s.notShuttingDown} not shutting down`);
-  if (s.stuck > 0) parts.push(`${s.stuck} stuck`);
-  const commanded = s.shutdown - s.stuck;
-  if (commanded > 0) parts.push(`${commanded} in shutdown`);
-  if (s.silent > 0) parts.push(`${s.silent} silent`);
-  if (s.unconfirmed > 0) parts.push(`${s.unconfirmed} unconfirmed`);
-  return parts.join(', ');
-}
-
-export interface ComparedLine {
-  /** String's name, or what the line is about. */
-  subject: string;
-  figure: string;
-  before: string;
-  after: string | null;
-}
-
-const lineOf = (
-  subject: string,
-  figure: string,
-  say: (f: FiguresString) => string,
-  before: FiguresString | undefined,
-  after: FiguresString | null | undefined,
-): ComparedLine => ({
-  subject,
-  figure,
-  before: before ? say(before) : 'not recorded',
-  after: after === null ? null : after ? say(after) : 'not recorded',
-});
-
-const about = (s: FiguresString): string =>
-  s.voltage === null
-    ? 'not known'
-    : `${volts(s.voltage)}${
-        s.expectedInShutdown !== null
-          ? `, ${volts(s.expectedInShutdown)} expected in shutdown`
-          : s.expectedVoltage === null
-            ? ''
-            : ` of ${volts(s.expectedVoltage)}`
-      }`;
-
-/**
- * Before and after, line by line, for a table. `after` null: nothing was looked at again yet. Only strings that the case
- * is about, unless it names none; then the site's own figures.
- */
-export function comparedFigures(before: CaseFigures, after: CaseFigures | null): ComparedLine[] {
-  const lines: ComparedLine[] = [
-    {
-      subject: 'Site',
-      figure: 'Light',
-      before: lightInWords(before),
-      after: after && lightInWords(after),
-    },
-    {
-      subject: 'Site',
-      figure: 'Power, AC',
-      before: power(before.site.power),
-      after: after && power(after.site.power),
-    },
-    {
-      subject: 'Site',
-      figure: 'Energy that day so far',
-      before: energy(before.site.energyToday),
-      after: after && energy(after.site.energyToday),
-    },
-  ];
-  for (const then of before.strings.filter((s) => s.slots.length > 0)) {
-    const now = after === null ? null : after.strings.find((s) => s.id === then.id);
-    const line = (figure: string, say: (f: FiguresString) => string) =>
-      lines.push(lineOf(then.name, figure, say, then, now));
-    line('Voltage', about);
-    line('Units', unitsInWords);
-    line('Current', (s) => (s.current === null ? 'not known' : `${one(s.current, 2)} A`));
-    line('Energy that day so far', (s) => energy(s.energyToday));
-    if (then.output ?? now?.output)
-      line('Output of the last day judged', (s) =>
-        s.output ? `${one(s.output.ratio * 100, 0)} % of expected (${s.output.day})` : 'not judged',
-      );
-  }
-  return lines;
-}
-
-export function lightInWords({ light }: CaseFigures): string {
-  const sun = `sun ${one(Math.abs(light.elevation), 0)}° ${light.elevation >= 0 ? 'above' : 'below'} the horizon`;
-  return `${LIGHT_WORDS[light.is]}, ${sun}${light.poaGlobal === null ? '' : `, ${one(light.poaGlobal, 0)} W/m² in the plane`}`;
-}

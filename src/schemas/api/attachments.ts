@@ -9,6 +9,7 @@ export const ATTACHMENT_SUBJECTS = [
   'shutdown_test',
   'string',
   'site',
+  'case',
   'connector_pair',
 ] as const;
 

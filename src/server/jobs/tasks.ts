@@ -1,12 +1,17 @@
-import type { CronItem, Task, TaskList } from 'graphile-worker';
+import type { CronItem, JobHelpers, Task, TaskList } from 'graphile-worker';
 import { z } from 'zod';
 import { database } from '../db/pools';
 import { sendDue } from '../mail/send-outbox';
 import { forgetRunsBefore } from '../queries/job-runs';
+import { sendCalls } from '../services/webhook-send';
+import { checkClosedCases } from '../services/check-closed-cases';
 import { judgeAllCauses, judgeSiteCauses } from './judge-causes';
 import { keepDays, mergeLateFrames } from './keep-days';
+import { nightsDue } from './nights-due';
+import { judgeNight } from './output-night';
 import { recorded, type Done } from './recorded';
 import { rollUpClosed, rollUpDirty } from './roll-up';
+import { tell, tellGathered } from './tell';
 
 /**
  * Every kind of background job: what it does, when, and in which queue (jobs of one queue wait for each other). A job
@@ -18,11 +23,12 @@ export interface JobKind {
   /** Minutes and hours in UTC, as cron has them; null: only when something asks for it. */
   cron: string | null;
   queue: string | null;
-  run: (payload: unknown) => Promise<Done>;
+  run: (payload: unknown, helpers: JobHelpers) => Promise<Done>;
 }
 
 const RUNS_KEPT_MS = 7 * 86_400_000;
 const ofSite = z.object({ siteId: z.int() });
+const ofNight = z.object({ siteId: z.int(), day: z.iso.date() });
 
 const kinds = {
   roll_up: {
@@ -48,11 +54,59 @@ const kinds = {
     queue: 'causes_sweep',
     run: () => judgeAllCauses(() => new Date()),
   },
+  nights: {
+    title: 'See where the sun has set and the day can be judged',
+    cron: '*/10 * * * *',
+    queue: 'nights',
+    run: async (_, helpers) => {
+      const due = await nightsDue(new Date());
+      for (const night of due)
+        await helpers.addJob('output_night', night, {
+          jobKey: `night:${night.siteId}:${night.day}`,
+          jobKeyMode: 'unsafe_dedupe',
+          queueName: `night:${night.siteId}`,
+        });
+      return { asked: due.length };
+    },
+  },
+  output_night: {
+    title: "Judge a site's day: low output, weak units, wrong strings, resistance",
+    cron: null,
+    queue: null,
+    run: async (payload) => {
+      const { siteId, day } = ofNight.parse(payload);
+      return judgeNight(siteId, day, new Date());
+    },
+  },
+  tell: {
+    title: 'Tell people and other systems of what happened',
+    cron: '* * * * *',
+    queue: 'tell',
+    run: () => tell(() => new Date()),
+  },
+  tell_gathered: {
+    title: 'Write the letters that gather a day or a night',
+    cron: '* * * * *',
+    queue: 'tell',
+    run: () => tellGathered(new Date()),
+  },
+  send_calls: {
+    title: 'Call other systems',
+    cron: '* * * * *',
+    queue: 'calls',
+    run: async () => ({ ...(await sendCalls(() => new Date())) }),
+  },
   send_letters: {
     title: 'Send letters that are due',
     cron: '* * * * *',
     queue: 'letters',
     run: async () => ({ sent: (await sendDue(() => new Date())).sent }),
+  },
+  check_cases: {
+    title: 'Look again at closed cases; open those again that did not hold',
+    cron: '*/10 * * * *',
+    queue: 'check_cases',
+    run: () => checkClosedCases(new Date()),
   },
   keep_days: {
     title: 'Make room for coming days, give up readings past their time',

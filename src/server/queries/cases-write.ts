@@ -50,13 +50,16 @@ export interface CauseOfCase {
   evidence: string;
   alternatives: string[];
   units: CasePart[];
-  stringIds: number[];
+  siteRef: string;
+  /** Public identifiers of its strings. */
+  strings: string[];
 }
 
 export async function causeForCase(tx: Tx, ref: string): Promise<CauseOfCase | undefined> {
   const { rows } = await tx.raw<{ rows: CauseOfCase[] }>(
     `select c.id::int4 as id, c.ref, c.site_id as "siteId", c.kind, c.headline, c.evidence, c.alternatives, c.units,
-            c.string_ids as "stringIds"
+            site.ref as "siteRef",
+            coalesce((select array_agg(s.ref::text) from string s where s.id = any (c.string_ids)), '{}') as strings
      from cause c join site on site.id = c.site_id where c.ref = :ref and ${SITE_VISIBLE}`,
     { ref },
   );
@@ -270,4 +273,13 @@ export async function writeCheck(
         ? { state: 'open', closed_at: null, closed_by: null, version: tx.raw('version + 1') }
         : {}),
     });
+}
+
+/** Names of strings by public identifier, in the order of their names. */
+export async function stringNames(tx: Tx, ids: readonly number[]): Promise<Map<string, string>> {
+  const { rows } = await tx.raw<{ rows: { ref: string; name: string }[] }>(
+    `select ref, name from string where id = any (?) order by name`,
+    [[...ids]],
+  );
+  return new Map(rows.map((r) => [r.ref, r.name]));
 }

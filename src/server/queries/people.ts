@@ -78,7 +78,8 @@ export async function setTheme(tx: Tx, personId: number, theme: string): Promise
 
 export interface AuditEntry {
   organisationId: number;
-  personId: number;
+  /** null: Wakeline itself. */
+  personId: number | null;
   address?: string | null | undefined;
   action: string;
   subject: string;

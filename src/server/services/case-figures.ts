@@ -53,6 +53,7 @@ function stringOf(s: StringNow, sums: StringSums | undefined, withUnits: boolean
           state: slot.state,
           verdict: slot.verdict,
           voltage: slot.voltage,
+          voltageIn: slot.voltageIn,
           expected: slot.expected,
           assumed: slot.assumed,
         }))

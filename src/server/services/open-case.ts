@@ -156,7 +156,13 @@ export async function openCase(tx: Tx, actor: Actor, call: CaseToOpen, at: Date)
       dueOn: call.dueOn ?? null,
     },
   });
-  const detail = { case: call.ref, number: made.number, title: call.title, person };
+  const detail = {
+    case: call.ref,
+    number: made.number,
+    title: call.title,
+    person,
+    personId: actor.personId,
+  };
   const event = { organisationId: site.organisationId, siteId: site.id, stringIds, at };
   await addCaseEvent(tx, {
     ...event,

@@ -1,0 +1,133 @@
+import { useState } from 'react';
+import { Button, ButtonLink } from '../../components/ui/Button';
+import { Heading } from '../../components/ui/Heading';
+import { LiveMark } from '../../components/ui/Live';
+import { NotRead } from '../../components/ui/NotRead';
+import { Notice } from '../../components/ui/Notice';
+import { Sheet } from '../../components/ui/Sheet';
+import { CASE_STATE_WORDS, CHECK_OUTCOME_WORDS, isClosed } from '../../domain/cases/cases';
+import type { CasePage } from '../../schemas/api/cases';
+import { paths } from '../../schemas/paths';
+import { ChecklistSheet } from './ChecklistSheet';
+import { FactsSheet } from './FactsSheet';
+import { FiguresSheet } from './FiguresSheet';
+import { Entry, HistorySheet } from './HistorySheet';
+import { PhotosSheet } from './PhotosSheet';
+import { useCase, type CaseInHand } from './query';
+import { useKeys } from './use-keys';
+import { WhatSheet } from './WhatSheet';
+import { dueWords } from './words';
+
+/** What follows from how a case stands, in a sentence. */
+function sentenceOf({ case: c }: CasePage): string {
+  const who = c.assignee ? `${c.assignee.name} has it` : 'Nobody has it yet';
+  if (!isClosed(c.state)) {
+    const due = dueWords(c);
+    const again = c.outcome === 'not_held' ? ' It was closed and did not hold: see the history.' : '';
+    return `${CASE_STATE_WORDS[c.state]}. ${who}${due ? `, ${due}` : ''}.${again}`;
+  }
+  return `${CASE_STATE_WORDS[c.state]}. ${
+    c.outcome === null
+      ? 'Wakeline looks again over the following daylight and opens it again if it did not hold.'
+      : `Wakeline looked again: ${CHECK_OUTCOME_WORDS[c.outcome]}.`
+  }`;
+}
+
+export function CaseFile({ initial }: { initial: CasePage }) {
+  const hand = useCase(initial);
+  const { page, error, refetch, send, meanwhile, status } = hand;
+  const [editing, setEditing] = useState(false);
+  const c = page.case;
+  useKeys({
+    c: () => document.getElementById('comment')?.focus(),
+    e: () => setEditing(true),
+    a: () => document.getElementById('assignee')?.focus(),
+  });
+  return (
+    <>
+      <Heading
+        crumbs={[
+          { label: 'Cases', href: paths.cases() },
+          { label: c.siteName, href: paths.site(c.siteId) },
+          { label: `Case ${c.number}` },
+        ]}
+        finding={c.title}
+        sentence={sentenceOf(page)}
+        actions={
+          <LiveMark
+            lostSince={!status.live && status.since ? status.since.toISOString() : null}
+            timeZone={c.timeZone}
+          />
+        }
+      />
+      <NotRead
+        error={error}
+        title="The case could not be read anew"
+        onRetry={() => refetch()}
+        className="mb-4"
+      >
+        What is shown may be old; what you typed is kept.
+      </NotRead>
+      {meanwhile && <MeanwhileNotice hand={hand} />}
+      {send.error && !meanwhile && (
+        <div className="mb-4">
+          <Notice kind="failed" title={send.error.title}>
+            {send.error.message}
+          </Notice>
+        </div>
+      )}
+      <div className="grid items-start gap-6 lg:grid-cols-[minmax(0,1fr)_320px]">
+        <div className="grid min-w-0 gap-6">
+          <WhatSheet hand={hand} editing={editing} onEdit={setEditing} />
+          <ChecklistSheet hand={hand} />
+          <FiguresSheet page={page} />
+          <HistorySheet hand={hand} />
+        </div>
+        <div className="row-start-1 grid min-w-0 gap-6 lg:row-start-auto">
+          <FactsSheet hand={hand} />
+          <PhotosSheet hand={hand} />
+          <Sheet id="pack" title="For whoever is called next">
+            <p className="mb-3 text-ink-2">
+              What is wrong, the as-built, readings, events, drawings, the checklist as done and photos.
+            </p>
+            <div className="flex flex-wrap gap-2">
+              <ButtonLink href={paths.api.casePack(c.id, 'pdf')} download>
+                Evidence as PDF
+              </ButtonLink>
+              <ButtonLink href={paths.api.casePack(c.id, 'zip')} download>
+                All as ZIP
+              </ButtonLink>
+            </div>
+          </Sheet>
+        </div>
+      </div>
+    </>
+  );
+}
+
+/** Somebody else was first: what they did, and the choice to send the own change over it. */
+function MeanwhileNotice({ hand }: { hand: CaseInHand }) {
+  const { meanwhile, forget, page, send } = hand;
+  if (!meanwhile) return null;
+  return (
+    <div
+      role="alert"
+      className="mb-5 border-l-0 border-t-2 border-t-rust bg-rust-wash px-[18px] py-4 text-rust-ink"
+    >
+      <p className="font-medium">{meanwhile.message}</p>
+      {meanwhile.since.length > 0 && (
+        <ul className="mt-2 bg-sheet px-3 text-ink">
+          {meanwhile.since.map((entry) => (
+            <Entry key={entry.id} entry={entry} now={page.at} timeZone={page.case.timeZone} />
+          ))}
+        </ul>
+      )}
+      <div className="mt-3 flex flex-wrap gap-2">
+        <Button weight="primary" disabled={send.isPending} onClick={meanwhile.again}>
+          Send mine over it
+        </Button>
+        <Button onClick={forget}>Leave it as it is now</Button>
+      </div>
+    </div>
+  );
+}

@@ -1,0 +1,111 @@
+import { Notice } from '../../components/ui/Notice';
+import { Table, type Column } from '../../components/ui/Table';
+import { Tag } from '../../components/ui/Tag';
+import { RelativeTime } from '../../components/ui/Time';
+import { CASE_KIND_WORDS, CASE_STATE_WORDS, CHECK_OUTCOME_WORDS } from '../../domain/cases/cases';
+import { CASE_SORTS, type CaseItem, type CasesView } from '../../schemas/api/cases';
+import { paths } from '../../schemas/paths';
+import { dueWords, OUTCOME_TONE, STATE_SHAPE, STATE_TONE } from './words';
+
+interface Props {
+  cases: readonly CaseItem[];
+  at: string;
+  view: CasesView;
+  timeZone: string;
+  onChange: (some: Partial<CasesView>) => void;
+}
+
+export function CaseTable({ cases, at, view, timeZone, onChange }: Props) {
+  const columns: Column<CaseItem>[] = [
+    {
+      key: 'number',
+      label: 'No.',
+      sortable: true,
+      from: 'sm',
+      cell: (c) => <span className="text-ink-2">{c.number}</span>,
+    },
+    {
+      key: 'title',
+      label: 'Case',
+      sortable: true,
+      cell: (c) => (
+        <>
+          <a
+            href={paths.caseFile(c.id)}
+            className="-my-2 block py-2 font-medium [overflow-wrap:anywhere] hover:underline"
+          >
+            <span className="text-ink-2 sm:hidden">#{c.number} </span>
+            {c.title}
+          </a>
+          <span className="block text-sm text-ink-2">
+            {c.kind === 'other' ? '' : `${CASE_KIND_WORDS[c.kind]} · `}
+            <span className="md:hidden">{c.siteName} · </span>
+            {c.strings.map((s) => s.name).join(', ') || 'no string'}
+          </span>
+        </>
+      ),
+    },
+    { key: 'site', label: 'Site', sortable: true, from: 'md', cell: (c) => c.siteName },
+    {
+      key: 'state',
+      label: 'State',
+      sortable: true,
+      cell: (c) => (
+        <span className="flex flex-wrap gap-1.5">
+          <Tag tone={STATE_TONE[c.state]} shape={STATE_SHAPE[c.state]}>
+            {CASE_STATE_WORDS[c.state]}
+          </Tag>
+          {c.outcome && <Tag tone={OUTCOME_TONE[c.outcome]}>{CHECK_OUTCOME_WORDS[c.outcome]}</Tag>}
+          {c.overdue && (
+            <span className="sm:hidden">
+              <Tag tone="rust">{dueWords(c)}</Tag>
+            </span>
+          )}
+        </span>
+      ),
+    },
+    {
+      key: 'assignee',
+      label: 'Assigned to',
+      sortable: true,
+      from: 'md',
+      cell: (c) => c.assignee?.name ?? <span className="text-ink-2">nobody</span>,
+    },
+    {
+      key: 'due',
+      label: 'Due',
+      sortable: true,
+      from: 'sm',
+      cell: (c) =>
+        c.dueOn === null ? (
+          <span className="text-ink-2">no day</span>
+        ) : c.overdue ? (
+          <Tag tone="rust">{dueWords(c)}</Tag>
+        ) : (
+          dueWords(c)
+        ),
+    },
+    {
+      key: 'changed',
+      label: 'Changed',
+      sortable: true,
+      numeric: true,
+      from: 'lg',
+      cell: (c) => <RelativeTime at={c.changedAt} now={at} timeZone={timeZone} />,
+    },
+  ];
+  return (
+    <Table
+      caption="Cases"
+      columns={columns}
+      rows={cases}
+      rowKey={(c) => c.id}
+      sorting={{ key: view.sort, descending: view.dir === 'desc' }}
+      onSort={({ key, descending }) => {
+        const sort = CASE_SORTS.find((s) => s === key);
+        if (sort) onChange({ sort, dir: descending ? 'desc' : 'asc' });
+      }}
+      empty={<Notice kind="empty" title="No case fits these filters" />}
+    />
+  );
+}

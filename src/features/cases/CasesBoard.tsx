@@ -1,0 +1,233 @@
+import { useMutation } from '@tanstack/react-query';
+import { useMemo, useState } from 'react';
+import { ButtonLink } from '../../components/ui/Button';
+import { Choice } from '../../components/ui/Choice';
+import { Heading } from '../../components/ui/Heading';
+import { NotRead } from '../../components/ui/NotRead';
+import { Notice } from '../../components/ui/Notice';
+import { SearchInput } from '../../components/ui/SearchInput';
+import { Segmented } from '../../components/ui/Segmented';
+import { Sheet } from '../../components/ui/Sheet';
+import {
+  CASE_KINDS,
+  CASE_KIND_WORDS,
+  CASE_STATE_WORDS,
+  isClosed,
+  type CaseState,
+} from '../../domain/cases/cases';
+import { counted } from '../../drawings/numbers';
+import { api, withQuery, type ApiError } from '../../lib/api';
+import { queryClient } from '../../lib/query-client';
+import { useViewInUrl } from '../../lib/view-in-url';
+import type { CaseItem, CasesPage, CasesView } from '../../schemas/api/cases';
+import { paths } from '../../schemas/paths';
+import { Board } from './Board';
+import { CaseTable } from './CaseTable';
+import { CASES_DEFAULTS, casesFinding, listedCases } from './list';
+import { MoveDialog } from './MoveDialog';
+import { useCases } from './query';
+import { useKeys } from './use-keys';
+
+interface Props {
+  initial: CasesPage;
+  view: CasesView;
+  timeZone: string;
+}
+
+/** All cases: by state on a board, or as a list. */
+export function CasesBoard({ initial, view: initialView, timeZone }: Props) {
+  const client = queryClient();
+  const [view, setView] = useViewInUrl(initialView, CASES_DEFAULTS);
+  const { data, error, refetch } = useCases(initial, view.show, initialView.show);
+  const page = data ?? initial;
+  const shown = useMemo(() => listedCases(page.cases, view, page.me), [page, view]);
+  const [closing, setClosing] = useState<{ item: CaseItem; to: CaseState } | null>(null);
+  const [said, setSaid] = useState('');
+  const move = useMutation<unknown, ApiError, { item: CaseItem; to: CaseState; note: string }>(
+    {
+      mutationFn: ({ item, to, note }) =>
+        api(paths.api.caseFile(item.id), {
+          method: 'PATCH',
+          body: { act: 'state', version: item.version, state: to, note },
+        }),
+      onSuccess: (_, { item, to }) => {
+        setClosing(null);
+        setSaid(`Case ${item.number} is now under “${CASE_STATE_WORDS[to]}”.`);
+      },
+      onSettled: () => client.invalidateQueries({ queryKey: ['cases'] }),
+    },
+    client,
+  );
+  const begin = (item: CaseItem, to: CaseState) => {
+    move.reset();
+    setSaid('');
+    if (isClosed(to)) setClosing({ item, to });
+    else move.mutate({ item, to, note: '' });
+  };
+  const toggle = <K extends 'who' | 'due'>(key: K, value: CasesView[K]) =>
+    setView({ [key]: view[key] === value ? 'all' : value });
+  useKeys({
+    n: () => window.location.assign(paths.caseNew()),
+    b: () => setView({ look: 'board' }),
+    l: () => setView({ look: 'list' }),
+    m: () => toggle('who', 'mine'),
+    u: () => toggle('who', 'unassigned'),
+    o: () => toggle('due', 'overdue'),
+  });
+  const words = casesFinding(page);
+  const filtered =
+    view.q !== '' || view.who !== 'all' || view.due !== 'all' || view.site !== 'all' || view.kind !== 'all';
+
+  return (
+    <>
+      <Heading
+        finding={words.finding}
+        sentence={words.sentence}
+        actions={
+          <ButtonLink weight="primary" href={paths.caseNew(view.site === 'all' ? {} : { site: view.site })}>
+            Open a case
+          </ButtonLink>
+        }
+      />
+      <div role="status" className="mb-4 empty:hidden">
+        {said && <Notice kind="done" title={said} />}
+      </div>
+      <NotRead
+        error={error}
+        title="The cases could not be read anew"
+        onRetry={() => refetch()}
+        className="mb-4"
+      >
+        What is shown may be old.
+      </NotRead>
+      {move.error && !closing && (
+        <div className="mb-4">
+          <Notice kind="failed" title={move.error.title}>
+            {move.error.message}
+          </Notice>
+        </div>
+      )}
+      <form
+        className="no-print mb-4 flex flex-wrap items-center gap-x-4 gap-y-2"
+        onSubmit={(event) => event.preventDefault()}
+      >
+        <Segmented
+          label="Look"
+          options={[
+            { value: 'board', label: 'Board' },
+            { value: 'list', label: 'List' },
+          ]}
+          value={view.look}
+          onChange={(look) => setView({ look })}
+        />
+        <SearchInput
+          label="Search by title, string, person or number"
+          placeholder="Search cases"
+          value={view.q}
+          onChange={(q) => setView({ q }, 'typed')}
+        />
+        <Segmented
+          label="Whose"
+          options={[
+            { value: 'all', label: 'Everybody’s' },
+            { value: 'mine', label: 'Mine' },
+            { value: 'unassigned', label: 'Nobody’s' },
+          ]}
+          value={view.who}
+          onChange={(who) => setView({ who })}
+        />
+        <label className="target inline-flex items-center gap-2 text-sm">
+          <input
+            type="checkbox"
+            checked={view.due === 'overdue'}
+            onChange={(event) => setView({ due: event.target.checked ? 'overdue' : 'all' })}
+            className="h-5 w-5 accent-[var(--petrol)]"
+          />
+          Overdue
+        </label>
+        <Choice
+          inline
+          label="Site"
+          value={view.site}
+          className="max-w-full [&_select]:max-w-[200px]"
+          options={[
+            { value: 'all', label: 'All sites' },
+            ...page.sites.map((s) => ({ value: s.id, label: s.name })),
+          ]}
+          onChange={(site) => setView({ site })}
+        />
+        <Choice
+          inline
+          label="Kind"
+          value={view.kind}
+          className="max-w-full [&_select]:max-w-[200px]"
+          options={[
+            { value: 'all', label: 'All kinds' },
+            ...CASE_KINDS.map((k) => ({ value: k, label: CASE_KIND_WORDS[k] })),
+          ]}
+          onChange={(kind) => setView({ kind: CASE_KINDS.find((k) => k === kind) ?? 'all' })}
+        />
+        <Choice
+          inline
+          label="Closed"
+          value={view.show}
+          options={[
+            { value: 'current', label: 'of the last 30 days' },
+            { value: 'open', label: 'none' },
+            { value: 'all', label: 'all of them' },
+          ]}
+          onChange={(show) => setView({ show: show === 'open' || show === 'all' ? show : 'current' })}
+        />
+        <ButtonLink href={withQuery(paths.api.casesCsv(), { ...view })} download className="ml-auto">
+          CSV
+        </ButtonLink>
+      </form>
+      <p className="mb-3 text-sm text-ink-2" role="status">
+        {counted(shown.length, 'case')}
+        {filtered && (
+          <>
+            {' '}
+            of {page.cases.length} fit.{' '}
+            <button
+              type="button"
+              className="target -my-3 text-petrol underline underline-offset-[3px]"
+              onClick={() => setView({ ...CASES_DEFAULTS, look: view.look, show: view.show })}
+            >
+              Show all
+            </button>
+          </>
+        )}
+      </p>
+      {page.cases.length === 0 ? (
+        <Notice
+          kind="empty"
+          title="There is no case yet"
+          action={<ButtonLink href={paths.caseNew()}>Open a case</ButtonLink>}
+        >
+          A case is opened from a cause, from a string, or by hand. It keeps the figures of that minute and
+          looks again after it was closed.
+        </Notice>
+      ) : view.look === 'board' ? (
+        <Board cases={shown} onMove={begin} />
+      ) : (
+        <Sheet flush>
+          <CaseTable cases={shown} at={page.at} view={view} timeZone={timeZone} onChange={setView} />
+        </Sheet>
+      )}
+      <MoveDialog
+        move={closing && { number: closing.item.number, to: closing.to }}
+        fault={move.error?.fault('note') ?? move.error?.message ?? null}
+        busy={move.isPending}
+        onMove={(note) => closing && move.mutate({ ...closing, note })}
+        onClose={() => {
+          setClosing(null);
+          move.reset();
+        }}
+      />
+      <p className="no-print mt-4 hidden text-sm text-ink-2 md:block">
+        Drag a card, or focus it and press <kbd>[</kbd> or <kbd>]</kbd> to move it; <kbd>?</kbd> lists all
+        keys.
+      </p>
+    </>
+  );
+}

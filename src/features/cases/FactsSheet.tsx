@@ -1,0 +1,124 @@
+import { useState } from 'react';
+import { Choice } from '../../components/ui/Choice';
+import { Field } from '../../components/ui/Field';
+import { Sheet } from '../../components/ui/Sheet';
+import { Tag } from '../../components/ui/Tag';
+import { RelativeTime } from '../../components/ui/Time';
+import {
+  CASE_KINDS,
+  CASE_KIND_WORDS,
+  CASE_ORIGIN_WORDS,
+  CASE_STATES,
+  CASE_STATE_WORDS,
+  isClosed,
+  type CaseState,
+} from '../../domain/cases/cases';
+import { paths } from '../../schemas/paths';
+import { MoveDialog } from './MoveDialog';
+import type { CaseInHand } from './query';
+import { dueWords } from './words';
+
+/** State, person, day: what changes most, in reach of a thumb. */
+export function FactsSheet({ hand }: { hand: CaseInHand }) {
+  const { page, send } = hand;
+  const c = page.case;
+  const [closing, setClosing] = useState<CaseState | null>(null);
+  const [closed, setClosed] = useState(c.version);
+  // a version newer than the one that the dialog was opened over: it was written
+  if (closing && c.version !== closed && c.state === closing) setClosing(null);
+  const facts = (some: {
+    assignee?: string | null;
+    dueOn?: string | null;
+    kind?: (typeof CASE_KINDS)[number];
+  }) => send.mutate({ act: 'facts', version: c.version, ...some });
+  const move = (to: CaseState) => {
+    send.reset();
+    if (isClosed(to)) {
+      setClosed(c.version);
+      setClosing(to);
+    } else send.mutate({ act: 'state', version: c.version, state: to, note: '' });
+  };
+  return (
+    <Sheet id="facts" title="Where it stands">
+      <div className="grid gap-4">
+        <Choice
+          label="State"
+          value={c.state}
+          options={CASE_STATES.map((s) => ({ value: s, label: CASE_STATE_WORDS[s] }))}
+          onChange={(state) => {
+            const to = CASE_STATES.find((s) => s === state);
+            if (to && to !== c.state) move(to);
+          }}
+        />
+        <Choice
+          id="assignee"
+          label="Assigned to"
+          value={c.assignee?.id ?? ''}
+          error={send.error?.fault('assignee') ?? null}
+          options={[
+            { value: '', label: 'Nobody yet' },
+            ...page.people.map((p) => ({
+              value: p.id,
+              label: p.id === page.me.id ? `${p.name} (you)` : p.name,
+            })),
+            ...(c.assignee && !page.people.some((p) => p.id === c.assignee?.id)
+              ? [{ value: c.assignee.id, label: `${c.assignee.name} (no longer here)` }]
+              : []),
+          ]}
+          onChange={(id) => facts({ assignee: id || null })}
+        />
+        <DueField key={c.dueOn ?? ''} dueOn={c.dueOn} onSave={(dueOn) => facts({ dueOn })} />
+        {c.overdue && (
+          <p>
+            <Tag tone="rust">{dueWords(c)}</Tag>
+          </p>
+        )}
+        <Choice
+          label="Kind"
+          value={c.kind}
+          options={CASE_KINDS.map((k) => ({ value: k, label: CASE_KIND_WORDS[k] }))}
+          onChange={(kind) => facts({ kind: CASE_KINDS.find((k) => k === kind) ?? 'other' })}
+        />
+        <p className="text-sm text-ink-2">
+          Opened {CASE_ORIGIN_WORDS[c.origin]}, {c.openedBy || 'Wakeline'},{' '}
+          <RelativeTime at={c.openedAt} now={page.at} timeZone={c.timeZone} />
+          {c.cause && (
+            <>
+              {'. Cause: '}
+              <a href={paths.cause(c.cause.id)} className="text-petrol underline underline-offset-[3px]">
+                {c.cause.headline}
+              </a>
+              {c.cause.open ? ', still open' : ', over'}
+            </>
+          )}
+        </p>
+      </div>
+      <MoveDialog
+        move={closing && { number: c.number, to: closing }}
+        fault={send.error?.fault('note') ?? (hand.meanwhile ? null : (send.error?.message ?? null))}
+        busy={send.isPending}
+        onMove={(note) => closing && send.mutate({ act: 'state', version: c.version, state: closing, note })}
+        onClose={() => {
+          setClosing(null);
+          hand.forget();
+        }}
+      />
+    </Sheet>
+  );
+}
+
+/** Kept when it is left, not while it is being typed: half a date is none. */
+function DueField({ dueOn, onSave }: { dueOn: string | null; onSave: (day: string | null) => void }) {
+  const [typed, setTyped] = useState(dueOn ?? '');
+  return (
+    <Field
+      label="Due"
+      type="date"
+      value={typed}
+      onChange={(event) => setTyped(event.target.value)}
+      onBlur={() => {
+        if (typed !== (dueOn ?? '')) onSave(typed || null);
+      }}
+    />
+  );
+}

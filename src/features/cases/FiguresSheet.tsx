@@ -1,0 +1,79 @@
+import { Sheet } from '../../components/ui/Sheet';
+import { Tag } from '../../components/ui/Tag';
+import { CHECK_OUTCOME_WORDS } from '../../domain/cases/cases';
+import { comparedFigures, staircaseOf } from '../../drawings/case-figures';
+import { Staircase } from '../../drawings/Staircase';
+import { fullTime } from '../../drawings/times';
+import type { CasePage } from '../../schemas/api/cases';
+import { OUTCOME_TONE } from './words';
+
+/** So many staircases are drawn; the table names every string. */
+const DRAWN = 3;
+
+/** The figures of the minute in which the case was opened, and those that were found again after closing. */
+export function FiguresSheet({ page }: { page: CasePage }) {
+  const { before, after, timeZone, closedAt } = page.case;
+  if (!before) return null;
+  const lines = comparedFigures(before, after);
+  const drawn = before.strings.filter((s) => s.slots.length > 0 && s.at !== null).slice(0, DRAWN);
+  return (
+    <Sheet
+      id="figures"
+      title={after ? 'Before and after' : 'Figures when it was opened'}
+      aside={
+        after ? (
+          <Tag tone={OUTCOME_TONE[after.outcome]}>{CHECK_OUTCOME_WORDS[after.outcome]}</Tag>
+        ) : closedAt ? (
+          'Wakeline looks again over the following daylight'
+        ) : undefined
+      }
+    >
+      <div className="overflow-x-auto">
+        <table className="w-full border-collapse text-left">
+          <caption className="sr-only">Figures before and after</caption>
+          <thead>
+            <tr className="border-b border-rule text-sm text-ink-2">
+              <th scope="col" className="py-2 pr-4 font-medium">
+                Figure
+              </th>
+              <th scope="col" className="py-2 pr-4 font-medium">
+                {fullTime(before.at, timeZone)}
+              </th>
+              {after && (
+                <th scope="col" className="py-2 font-medium">
+                  {fullTime(after.at, timeZone)}
+                </th>
+              )}
+            </tr>
+          </thead>
+          <tbody>
+            {lines.map((line) => (
+              <tr key={`${line.subject} ${line.figure}`} className="border-b border-rule-faint align-top">
+                <th scope="row" className="py-2 pr-4 font-normal">
+                  <span className="block text-sm text-ink-2">{line.subject}</span>
+                  {line.figure}
+                </th>
+                <td className="py-2 pr-4">{line.before}</td>
+                {after && <td className="py-2">{line.after}</td>}
+              </tr>
+            ))}
+          </tbody>
+        </table>
+      </div>
+      {drawn.map((then) => {
+        const now = after?.strings.find((s) => s.id === then.id);
+        return (
+          <figure key={then.id} className="mt-5">
+            <figcaption className="mb-1 text-sm text-ink-2">
+              String {then.name}: volts along its positions{now ? ', before and after' : ''}
+            </figcaption>
+            <div className={now ? 'grid gap-4 lg:grid-cols-2' : ''}>
+              <Staircase id={`before-${then.id}`} {...staircaseOf(then)} width={560} height={260} />
+              {now && <Staircase id={`after-${then.id}`} {...staircaseOf(now)} width={560} height={260} />}
+            </div>
+          </figure>
+        );
+      })}
+    </Sheet>
+  );
+}

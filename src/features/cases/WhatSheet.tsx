@@ -1,0 +1,132 @@
+import { useState } from 'react';
+import { Button } from '../../components/ui/Button';
+import { Field } from '../../components/ui/Field';
+import { Sheet } from '../../components/ui/Sheet';
+import type { CasePage } from '../../schemas/api/cases';
+import { TITLE_MAX, WHAT_MAX } from '../../schemas/api/cases';
+import { paths } from '../../schemas/paths';
+import type { CaseInHand } from './query';
+import { TextArea } from './TextArea';
+
+/** What is wrong and which parts it is about. */
+export function WhatSheet({
+  hand,
+  editing,
+  onEdit,
+}: {
+  hand: CaseInHand;
+  editing: boolean;
+  onEdit: (on: boolean) => void;
+}) {
+  const c = hand.page.case;
+  return (
+    <Sheet
+      id="what"
+      title="What is wrong"
+      aside={
+        !editing && (
+          <button
+            type="button"
+            className="target -my-3 text-petrol underline underline-offset-[3px]"
+            onClick={() => onEdit(true)}
+          >
+            Change
+          </button>
+        )
+      }
+    >
+      {editing ? (
+        <EditForm hand={hand} onDone={() => onEdit(false)} />
+      ) : c.what ? (
+        <p className="max-w-[70ch] whitespace-pre-wrap text-[16px] leading-6 [overflow-wrap:anywhere]">
+          {c.what}
+        </p>
+      ) : (
+        <p className="text-ink-2">Nothing is written down yet.</p>
+      )}
+      <Parts page={hand.page} />
+    </Sheet>
+  );
+}
+
+function EditForm({ hand, onDone }: { hand: CaseInHand; onDone: () => void }) {
+  const { page, send } = hand;
+  const [title, setTitle] = useState(page.case.title);
+  const [what, setWhat] = useState(page.case.what);
+  return (
+    <form
+      className="grid gap-4"
+      noValidate
+      onSubmit={(event) => {
+        event.preventDefault();
+        send.mutate({ act: 'facts', version: page.case.version, title, what }, { onSuccess: onDone });
+      }}
+    >
+      <Field
+        label="Title"
+        value={title}
+        maxLength={TITLE_MAX}
+        error={send.error?.fault('title') ?? null}
+        onChange={(event) => setTitle(event.target.value)}
+      />
+      <TextArea
+        label="What is wrong"
+        value={what}
+        rows={6}
+        maxLength={WHAT_MAX}
+        error={send.error?.fault('what') ?? null}
+        onChange={setWhat}
+      />
+      <div className="flex flex-wrap gap-2">
+        <Button type="submit" weight="primary" disabled={send.isPending}>
+          Save
+        </Button>
+        <Button onClick={onDone}>Leave it as it was</Button>
+      </div>
+    </form>
+  );
+}
+
+function Parts({ page }: { page: CasePage }) {
+  const { strings, siteId, parts } = page.case;
+  if (strings.length === 0)
+    return (
+      <p className="mt-4 text-sm text-ink-2">No string is named: Wakeline can’t look again by itself.</p>
+    );
+  return (
+    <ul className="mt-4 divide-y divide-rule-faint border-t border-rule-faint">
+      {strings.map((s) => {
+        const units = parts
+          .filter((p) => p.stringId === s.id && p.position !== null)
+          .sort((a, b) => (a.position ?? 0) - (b.position ?? 0));
+        return (
+          <li key={s.id} className="flex flex-wrap items-baseline gap-x-4 gap-y-1 py-1.5">
+            <a
+              href={paths.string(siteId, s.id)}
+              className="target inline-flex items-center font-medium text-petrol underline underline-offset-[3px]"
+            >
+              String {s.name}
+            </a>
+            {units.length === 0 ? (
+              <span className="text-ink-2">the whole string</span>
+            ) : (
+              <ul className="flex flex-wrap gap-x-4 gap-y-1">
+                {units.map((u) => (
+                  <li key={u.position}>
+                    <a
+                      href={`${paths.string(siteId, s.id)}#units`}
+                      className="target inline-flex items-center hover:underline"
+                    >
+                      position {u.position}
+                      {u.serial && <span className="ml-1.5 text-sm text-ink-2">{u.serial}</span>}
+                    </a>
+                  </li>
+                ))}
+              </ul>
+            )}
+          </li>
+        );
+      })}
+    </ul>
+  );
+}

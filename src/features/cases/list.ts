@@ -1,0 +1,92 @@
+import { CASE_KIND_WORDS, CASE_STATES, isClosed } from '../../domain/cases/cases';
+import { countAtStart, counted } from '../../drawings/numbers';
+import type { CaseItem, CasesPage, CasesView } from '../../schemas/api/cases';
+
+export const CASES_DEFAULTS: CasesView = {
+  look: 'board',
+  q: '',
+  who: 'all',
+  due: 'all',
+  site: 'all',
+  kind: 'all',
+  show: 'current',
+  sort: 'changed',
+  dir: 'desc',
+};
+
+const words = new Intl.Collator('en', { sensitivity: 'base', numeric: true });
+
+/** Names that stand in for "none": those come last, whichever way it is sorted. */
+const text = (a: string | null, b: string | null, flip: number): number =>
+  a === null || b === null ? (a === null ? 1 : 0) - (b === null ? 1 : 0) : flip * words.compare(a, b);
+
+function compared(a: CaseItem, b: CaseItem, view: CasesView): number {
+  const flip = view.dir === 'asc' ? 1 : -1;
+  switch (view.sort) {
+    case 'number':
+      return flip * (a.number - b.number);
+    case 'title':
+      return flip * words.compare(a.title, b.title);
+    case 'site':
+      return flip * words.compare(a.siteName, b.siteName);
+    case 'state':
+      return flip * (CASE_STATES.indexOf(a.state) - CASE_STATES.indexOf(b.state));
+    case 'assignee':
+      return text(a.assignee?.name ?? null, b.assignee?.name ?? null, flip);
+    case 'due':
+      return text(a.dueOn, b.dueOn, flip);
+    case 'changed':
+      return flip * a.changedAt.localeCompare(b.changedAt);
+  }
+}
+
+/** What a search looks at. */
+const textOf = (c: CaseItem): string =>
+  [
+    `#${c.number}`,
+    c.title,
+    c.siteName,
+    c.assignee?.name ?? '',
+    c.openedBy,
+    CASE_KIND_WORDS[c.kind],
+    ...c.strings.map((s) => s.name),
+  ]
+    .join(' ')
+    .toLocaleLowerCase();
+
+/** The cases of a view: filtered and sorted; newer numbers settle what is equal. */
+export function listedCases(cases: readonly CaseItem[], view: CasesView, me: string): CaseItem[] {
+  const typed = view.q.trim().toLocaleLowerCase().split(/\s+/).filter(Boolean);
+  return cases
+    .filter((c) => view.show !== 'open' || !isClosed(c.state))
+    .filter((c) => view.who !== 'mine' || c.assignee?.id === me)
+    .filter((c) => view.who !== 'unassigned' || (c.assignee === null && !isClosed(c.state)))
+    .filter((c) => view.due !== 'overdue' || c.overdue)
+    .filter((c) => view.site === 'all' || c.siteId === view.site)
+    .filter((c) => view.kind === 'all' || c.kind === view.kind)
+    .filter((c) => typed.every((word) => textOf(c).includes(word)))
+    .sort((a, b) => compared(a, b, view) || b.number - a.number);
+}
+
+/** The heading of the page and what follows from it. */
+export function casesFinding({ cases, me }: CasesPage): { finding: string; sentence: string } {
+  const open = cases.filter((c) => !isClosed(c.state));
+  const overdue = open.filter((c) => c.overdue).length;
+  const mine = open.filter((c) => c.assignee?.id === me).length;
+  const nobodys = open.filter((c) => c.assignee === null).length;
+  if (open.length === 0)
+    return {
+      finding: 'No case is open',
+      sentence: 'Open one from a cause, from a string, or by hand; it keeps the figures of that minute.',
+    };
+  const parts = [
+    overdue > 0 ? `${counted(overdue, 'is', 'are')} overdue` : 'none is overdue',
+    mine > 0 ? `${mine} ${mine === 1 ? 'is' : 'are'} yours` : '',
+    nobodys > 0 ? `${nobodys} ${nobodys === 1 ? 'has' : 'have'} nobody yet` : '',
+  ].filter(Boolean);
+  const list = parts.length > 1 ? `${parts.slice(0, -1).join(', ')} and ${parts.at(-1)}` : (parts[0] ?? '');
+  return {
+    finding: open.length === 1 ? 'One case is open' : `${countAtStart(open.length)} cases are open`,
+    sentence: `${list[0]?.toUpperCase() ?? ''}${list.slice(1)}.`,
+  };
+}

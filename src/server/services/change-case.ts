@@ -1,0 +1,270 @@
+import type { Actor } from '../../domain/access/permissions';
+import { CASE_KIND_WORDS, CASE_STATE_WORDS, isClosed } from '../../domain/cases/cases';
+import { checklistItem } from '../../domain/cases/checklists';
+import { partsInWords } from '../../drawings/case-figures';
+import type { CaseChangeBody, CaseEntry, CasePage } from '../../schemas/api/cases';
+import type { Tx } from '../db/transaction';
+import { AppError, found } from '../errors';
+import { entriesOf } from '../queries/cases';
+import {
+  addCaseEntry,
+  addCaseEvent,
+  lockCase,
+  staffOf,
+  stringNames,
+  updateCase,
+  type CaseChange,
+  type CaseEventKind,
+  type LockedCase,
+} from '../queries/cases-write';
+import { tellSiteChanged } from '../queries/live-notices';
+import { addAuditEntry, findPersonName } from '../queries/people';
+import { casePage } from './cases';
+import { partsOf, personAmong } from './open-case';
+
+type Facts = Extract<CaseChangeBody, { act: 'facts' }>;
+type ToState = Extract<CaseChangeBody, { act: 'state' }>;
+type Check = Extract<CaseChangeBody, { act: 'check' }>;
+
+interface Changer {
+  tx: Tx;
+  actor: Actor;
+  /** Name of who changes. */
+  person: string;
+  at: Date;
+  address: string | null;
+}
+
+/**
+ * Changes a case: its facts, its state, or one line of its checklist. Who saw an older version is told what changed
+ * meanwhile and nothing is overwritten.
+ * @throws AppError not_found · invalid · conflict (`current`: the case as it stands and what changed since)
+ */
+export async function changeCase(
+  tx: Tx,
+  actor: Actor,
+  ref: string,
+  body: CaseChangeBody,
+  at: Date,
+  address: string | null,
+): Promise<CasePage> {
+  const kept = found(await lockCase(tx, ref), 'case');
+  const person = (await findPersonName(tx, actor.personId)) ?? '';
+  const by: Changer = { tx, actor, person, at, address };
+  if (body.act !== 'check' && body.version !== kept.version) throw await meanwhile(by, kept, body.version);
+  if (body.act === 'facts') await changeFacts(by, kept, body);
+  else if (body.act === 'state') await changeState(by, kept, body);
+  else await checkLine(by, kept, body);
+  await tellSiteChanged(tx, kept.siteId);
+  return casePage(tx, actor, ref, at);
+}
+
+async function meanwhile({ tx, actor, at }: Changer, kept: LockedCase, seen: number): Promise<AppError> {
+  const page = await casePage(tx, actor, kept.ref, at);
+  const since = (await entriesOf(tx, kept.id)).filter(
+    (e: CaseEntry) => typeof e.detail.version === 'number' && e.detail.version > seen,
+  );
+  const who = [...new Set(since.map((e) => e.person ?? 'Wakeline'))].join(' and ');
+  return new AppError('conflict', {
+    message: `${who || 'Somebody'} changed this case meanwhile. Look at what changed, then send yours again or leave it.`,
+    current: { page, since },
+  });
+}
+
+const tell = (
+  { tx, actor, at, person }: Changer,
+  kept: LockedCase,
+  kind: CaseEventKind,
+  detail: Record<string, unknown>,
+) =>
+  addCaseEvent(tx, {
+    organisationId: kept.organisationId,
+    siteId: kept.siteId,
+    stringIds: kept.stringIds,
+    at,
+    kind,
+    detail: {
+      case: kept.ref,
+      number: kept.number,
+      title: kept.title,
+      person,
+      personId: actor.personId,
+      ...detail,
+    },
+  });
+
+const audit = (
+  { tx, actor, address }: Changer,
+  kept: LockedCase,
+  action: string,
+  before: unknown,
+  after: unknown,
+) =>
+  addAuditEntry(tx, {
+    organisationId: actor.organisationId,
+    personId: actor.personId,
+    address,
+    action,
+    subject: `case ${kept.ref}`,
+    siteId: kept.siteId,
+    before,
+    after,
+  });
+
+interface Said {
+  field: string;
+  from: string;
+  to: string;
+}
+
+async function changeFacts(by: Changer, kept: LockedCase, body: Facts): Promise<void> {
+  const { tx, at, actor } = by;
+  const said: Said[] = [];
+  const change: CaseChange = {};
+  const says = (field: string, from: string, to: string) => said.push({ field, from, to });
+  if (body.title !== undefined && body.title !== kept.title) {
+    change.title = body.title;
+    says('title', kept.title, body.title);
+  }
+  if (body.what !== undefined && body.what !== kept.what) {
+    change.what = body.what;
+    says('what is wrong', kept.what, body.what);
+  }
+  if (body.kind !== undefined && body.kind !== kept.kind) {
+    change.kind = body.kind;
+    says('kind', CASE_KIND_WORDS[kept.kind], CASE_KIND_WORDS[body.kind]);
+  }
+  if (body.dueOn !== undefined && body.dueOn !== kept.dueOn) {
+    change.dueOn = body.dueOn;
+    says('due', kept.dueOn ?? 'no day', body.dueOn ?? 'no day');
+  }
+  let assigned: { id: number; name: string } | null = null;
+  if (body.assignee !== undefined) {
+    const staff = await staffOf(tx);
+    const to = body.assignee === null ? null : personAmong(staff, body.assignee, 'assignee');
+    if ((to?.id ?? null) !== kept.assigneeId) {
+      change.assigneeId = to?.id ?? null;
+      const from = kept.assigneeId === null ? 'nobody' : ((await findPersonName(tx, kept.assigneeId)) ?? '');
+      says('assigned to', from, to?.name ?? 'nobody');
+      assigned = to;
+    }
+  }
+  if (body.strings !== undefined || body.parts !== undefined) {
+    const names = await stringNames(tx, kept.stringIds);
+    const next = await partsOf(
+      tx,
+      kept.siteId,
+      {
+        strings: body.strings ?? [...names.keys()],
+        parts: body.parts ?? kept.parts.map((p) => ({ string: p.stringId, position: p.position })),
+      },
+      new Map(),
+    );
+    const serial = new Map(kept.parts.map((p) => [`${p.stringId} ${p.position}`, p.serial]));
+    change.stringIds = next.stringIds;
+    change.parts = next.parts.map((p) => ({
+      ...p,
+      serial: serial.get(`${p.stringId} ${p.position}`) ?? p.serial,
+    }));
+    const from = partsInWords(kept.parts, [...names.values()]);
+    const to = partsInWords(change.parts, [...(await stringNames(tx, next.stringIds)).values()]);
+    if (from !== to) says('parts', from || 'none', to || 'none');
+  }
+  if (said.length === 0) return;
+  await updateCase(tx, kept.id, change, at);
+  await addCaseEntry(tx, {
+    caseId: kept.id,
+    siteId: kept.siteId,
+    at,
+    personId: actor.personId,
+    kind: 'change',
+    detail: { version: kept.version + 1, changes: said },
+  });
+  const titled = { ...kept, title: change.title ?? kept.title };
+  if (assigned && assigned.id !== actor.personId)
+    await tell(by, titled, 'case_assigned', { assignee: assigned.name, assigneeId: assigned.id });
+  await audit(
+    by,
+    kept,
+    'case.changed',
+    Object.fromEntries(said.map((s) => [s.field, s.from])),
+    Object.fromEntries(said.map((s) => [s.field, s.to])),
+  );
+}
+
+async function changeState(by: Changer, kept: LockedCase, body: ToState): Promise<void> {
+  const { tx, at, actor } = by;
+  if (body.state === kept.state) return;
+  const closing = isClosed(body.state);
+  if (closing && body.note.trim() === '') {
+    const message = 'Say what was done or found, so that the next person need not ask.';
+    throw new AppError('invalid', { message, fields: [{ field: 'body.note', message }] });
+  }
+  const reopening = isClosed(kept.state) && !closing;
+  await updateCase(
+    tx,
+    kept.id,
+    {
+      state: body.state,
+      ...(closing ? { closed: { at, by: actor.personId } } : reopening ? { closed: null } : {}),
+    },
+    at,
+  );
+  await addCaseEntry(tx, {
+    caseId: kept.id,
+    siteId: kept.siteId,
+    at,
+    personId: actor.personId,
+    kind: 'state',
+    body: body.note,
+    detail: { version: kept.version + 1, from: kept.state, to: body.state },
+  });
+  if (closing) await tell(by, kept, 'case_closed', { state: body.state, assigneeId: kept.assigneeId });
+  else if (reopening)
+    await tell(by, kept, 'case_reopened', {
+      reason: body.note || `${by.person} opened it again.`,
+      assigneeId: kept.assigneeId,
+    });
+  await audit(
+    by,
+    kept,
+    closing ? 'case.closed' : reopening ? 'case.reopened' : 'case.changed',
+    { state: CASE_STATE_WORDS[kept.state] },
+    { state: CASE_STATE_WORDS[body.state], ...(body.note ? { note: body.note } : {}) },
+  );
+}
+
+async function checkLine(by: Changer, kept: LockedCase, body: Check): Promise<void> {
+  const { tx, at, actor, person } = by;
+  const item = found(checklistItem(body.key), 'line of the checklist');
+  const mark = kept.checklist.find((m) => m.key === body.key);
+  if ((mark?.at ?? null) !== body.seen)
+    throw new AppError('conflict', {
+      message: `${mark?.by ?? 'Somebody'} changed this line meanwhile: ${mark?.done ? 'it is done' : 'it is open'}. Look at it, then send yours again.`,
+      current: { page: await casePage(tx, actor, kept.ref, at), since: [] },
+    });
+  const next = { key: body.key, done: body.done, by: person, at: at.toISOString(), note: body.note };
+  await updateCase(
+    tx,
+    kept.id,
+    { checklist: [...kept.checklist.filter((m) => m.key !== body.key), next] },
+    at,
+    false,
+  );
+  await addCaseEntry(tx, {
+    caseId: kept.id,
+    siteId: kept.siteId,
+    at,
+    personId: actor.personId,
+    kind: 'checklist',
+    body: body.note,
+    detail: { key: body.key, check: item.check, done: body.done },
+  });
+  await audit(
+    by,
+    kept,
+    'case.checked',
+    mark ? { check: item.check, done: mark.done, note: mark.note } : null,
+    { check: item.check, done: body.done, note: body.note },
+  );
+}
