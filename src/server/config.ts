@@ -44,6 +44,8 @@ const settings = z.object({
   SMTP_URL: z.url({ protocol: /^smtps?$/ }).optional(),
   /** Who letters are from. */
   MAIL_FROM: z.string().default('Wakeline <wakeline@localhost>'),
+  /** 1: webhooks may call addresses inside private networks, and without TLS there. */
+  WEBHOOKS_PRIVATE: flag,
   /** The demo's local post keeps what was sent in this folder; a page shows it. */
   LOCAL_MAIL_FOLDER: z.string().optional(),
   /** The plant's switches, where a simulator runs beside the demo; only named on the demo's pages. */

@@ -5,6 +5,7 @@ import { log } from '../log';
 import { CHANNELS } from '../queries/live-notices';
 import { keepDays } from './keep-days';
 import { CRON, TASKS } from './tasks';
+import { TellWatch } from './tell';
 
 /** Background jobs. The library keeps its queue as the database's owner; the jobs themselves work as ingest. */
 
@@ -19,6 +20,7 @@ const GATHER_MS = 1000;
 interface Working {
   runner: Runner;
   listener: Listener;
+  telling: TellWatch;
 }
 // one per process, also when a development server reloads this module
 const KEY = Symbol.for('wakeline.worker');
@@ -49,7 +51,9 @@ export async function startWorker(): Promise<void> {
     () => undefined,
   );
   await listener.start();
-  shared[KEY] = { runner, listener };
+  const telling = new TellWatch();
+  await telling.start();
+  shared[KEY] = { runner, listener, telling };
 }
 
 async function askForCauses(runner: Runner, siteId: number): Promise<void> {
@@ -74,5 +78,6 @@ export async function stopWorker(): Promise<void> {
   const working = shared[KEY];
   shared[KEY] = undefined;
   await working?.listener.stop();
+  await working?.telling.stop();
   await working?.runner.stop();
 }

@@ -17,7 +17,10 @@ const receivedLetter = z.object({
   to: z.string(),
   subject: z.string(),
   text: z.string(),
-  html: z.string(),
+  html: z.string(), // pictures inside it, as data
+  /** Header lines by their names in small letters. */
+  headers: z.record(z.string(), z.string()).default({}),
+  attachments: z.array(z.object({ cid: z.string(), type: z.string(), bytes: z.int() })).default([]),
 });
 export type ReceivedLetter = z.infer<typeof receivedLetter>;
 
@@ -48,6 +51,14 @@ export async function startLocalPost(folder: string, port = 0): Promise<LocalPos
           subject: mail.subject ?? '',
           text: mail.text ?? '',
           html: mail.html || '',
+          headers: Object.fromEntries(
+            mail.headerLines.map(({ key, line }) => [key, line.slice(line.indexOf(':') + 1).trim()]),
+          ),
+          attachments: mail.attachments.map((a) => ({
+            cid: a.cid ?? '',
+            type: a.contentType,
+            bytes: a.size,
+          })),
         };
         // whole or not at all: a reader never meets half a file
         const file = path.join(folder, `${id}.json`);

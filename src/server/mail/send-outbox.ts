@@ -1,8 +1,9 @@
-import { createTransport, type Transporter } from 'nodemailer';
+import { createTransport, type SendMailOptions, type Transporter } from 'nodemailer';
 import { config } from '../config';
 import { asIngest } from '../db/transaction';
 import { log } from '../log';
-import { markNotSent, markSent, takeDueMessage } from '../queries/outbox';
+import { withType } from './letter-type';
+import { markNotSent, markSent, takeDueMessage, type WaitingMessage } from '../queries/outbox';
 
 const MOST_A_RUN = 500;
 const MOST_TRIES = 12;
@@ -16,6 +17,35 @@ export const messageIdOf = (ref: string): string => `<${ref}@wakeline>`;
 export const waitAfter = (attempts: number): number =>
   Math.min(LONGEST_WAIT_S, FIRST_WAIT_S * 2 ** Math.max(0, attempts - 1));
 
+/** A header's text is one line: what a name brings along ends no header and begins none. */
+export const oneLine = (text: string): string => text.replaceAll(/[\p{Cc}\u2028\u2029]+/gu, ' ').trim();
+
+/** Where the drawing of a letter is found inside it. */
+export const PICTURE_CID = 'drawing@wakeline';
+
+/** The letter as nodemailer takes it. */
+function mailOf(message: WaitingMessage, from: string): SendMailOptions {
+  const { to, picture, unsubscribeUrl } = message;
+  return {
+    from,
+    to: { address: to.address, name: oneLine(to.name) },
+    subject: oneLine(message.subject),
+    text: message.text,
+    html: withType(message.html),
+    messageId: messageIdOf(message.ref),
+    attachments: picture
+      ? [{ filename: 'drawing.png', content: picture, cid: PICTURE_CID, contentDisposition: 'inline' }]
+      : [],
+    headers: {
+      'Auto-Submitted': 'auto-generated',
+      ...(unsubscribeUrl && {
+        'List-Unsubscribe': { prepared: true, value: `<${unsubscribeUrl}>` },
+        'List-Unsubscribe-Post': 'List-Unsubscribe=One-Click',
+      }),
+    },
+  };
+}
+
 /** The server will never take this one: a 5xx that is about this letter (RFC 5321, 4.2.1). */
 const refusedForGood = (error: unknown): boolean => {
   const { responseCode, command } = error as { responseCode?: unknown; command?: unknown };
@@ -25,6 +55,18 @@ const refusedForGood = (error: unknown): boolean => {
     responseCode < 600 &&
     command !== 'CONN' &&
     !String(command).startsWith('AUTH')
+  );
+};
+
+const THIS_SERVER = new Set(['ECONNECTION', 'ECONNREFUSED', 'ESOCKET', 'EDNS', 'ETIMEDOUT', 'ETLS', 'EAUTH']);
+
+/** Not about this letter: the server is away, or lets nobody in. Every other letter would meet the same. */
+const serverAway = (error: unknown): boolean => {
+  const { code, command } = error as { code?: unknown; command?: unknown };
+  return (
+    command === 'CONN' ||
+    String(command).startsWith('AUTH') ||
+    (typeof code === 'string' && THIS_SERVER.has(code))
   );
 };
 
@@ -51,30 +93,27 @@ export async function sendDue(
       const message = await takeDueMessage(tx, now());
       if (!message) return 'none';
       try {
-        await transport.sendMail({
-          from,
-          to: { address: message.to.address, name: message.to.name },
-          subject: message.subject,
-          text: message.text,
-          html: message.html,
-          messageId: messageIdOf(message.ref),
-          headers: { 'Auto-Submitted': 'auto-generated' },
-        });
+        await transport.sendMail(mailOf(message, from));
         await markSent(tx, message.id, now());
         return 'sent';
       } catch (error) {
         const attempts = message.attempts + 1;
-        const final = refusedForGood(error) || attempts >= MOST_TRIES;
+        const away = serverAway(error);
+        const final = !away && (refusedForGood(error) || attempts >= MOST_TRIES);
         await markNotSent(tx, message.id, {
           at: now(),
           error: error instanceof Error ? error.message : String(error),
-          notBefore: final ? null : new Date(now().getTime() + waitAfter(attempts) * 1000),
+          notBefore: final
+            ? null
+            : new Date(now().getTime() + (away ? FIRST_WAIT_S : waitAfter(attempts)) * 1000),
         });
-        return 'failed';
+        return away ? 'away' : 'failed';
       }
     });
     if (outcome === 'none') break;
-    count[outcome]++;
+    count[outcome === 'away' ? 'failed' : outcome]++;
+    // the others stay due and go out as soon as it is back; a letter is never given up for the server's sake
+    if (outcome === 'away') break;
   }
   if (count.failed > 0) log.warn(count, 'the mail server did not take every letter');
   return count;

@@ -22,6 +22,8 @@ export const CHANNELS = {
   written: 'written',
   /** [person id]: their notices have changed. */
   noticed: 'noticed',
+  /** A webhook is to be called now. */
+  called: 'called',
 } as const;
 
 const changed = z.object({ sites: z.array(z.int()).default([]), strings: z.array(z.int()).default([]) });
@@ -89,4 +91,9 @@ export async function tellAsBuiltChanged(tx: Knex, siteId: number): Promise<void
 /** Tells ingest that tokens of a logger were ended: connections that came with one of them are closed. */
 export async function tellTokensEnded(tx: Knex, loggerId: number): Promise<void> {
   await tx.raw('select pg_notify(?, ?)', [CHANNELS.tokens, String(loggerId)]);
+}
+
+/** Wakes the calls to other systems: somebody looks at one. */
+export async function tellCalled(tx: Knex): Promise<void> {
+  await tx.raw('select pg_notify(?, ?)', [CHANNELS.called, '']);
 }

@@ -13,6 +13,10 @@ export interface NewMessage {
   subject: string;
   text: string;
   html: string;
+  /** The drawing inside it: a row of letter_picture. */
+  pictureId?: string | null;
+  /** Ends letters of this kind with one click (RFC 8058). */
+  unsubscribeUrl?: string | null;
 }
 
 /** @returns whether it is new: a second letter of one event to one address is none */
@@ -29,6 +33,8 @@ export async function addMessage(tx: Tx, message: NewMessage): Promise<boolean> 
       subject: message.subject,
       text_body: message.text,
       html_body: message.html,
+      picture_id: message.pictureId ?? null,
+      unsubscribe_url: message.unsubscribeUrl ?? null,
     })
     .onConflict(['event_key', 'to_address'])
     .ignore()
@@ -44,6 +50,30 @@ export interface WaitingMessage {
   text: string;
   html: string;
   attempts: number;
+  picture: Buffer | null;
+  unsubscribeUrl: string | null;
+}
+
+/** Keeps a drawing for letters, once however many carry it. @returns its number */
+export async function keepPicture(
+  tx: Tx,
+  organisationId: number,
+  picture: { sha256: Buffer; png: Buffer },
+): Promise<string> {
+  await tx.raw(
+    'insert into letter_picture (organisation_id, sha256, png) values (?, ?, ?) on conflict do nothing',
+    [organisationId, picture.sha256, picture.png],
+  );
+  const { rows } = await tx.raw<{ rows: { id: string }[] }>(
+    'select id from letter_picture where organisation_id = ? and sha256 = ?',
+    [organisationId, picture.sha256],
+  );
+  return rows[0]!.id;
+}
+
+/** Drops drawings that no letter of the last weeks carries. */
+export async function dropOldPictures(tx: Tx, before: Date): Promise<void> {
+  await tx('letter_picture').where('created_at', '<', before).delete();
 }
 
 /** The oldest letter that is due, locked until the transaction ends; others pass it by. */
@@ -51,7 +81,9 @@ export async function takeDueMessage(tx: Tx, now: Date): Promise<WaitingMessage 
   const { rows } = await tx.raw<{
     rows: (Omit<WaitingMessage, 'to'> & { address: string; name: string })[];
   }>(
-    `select id, ref, to_address as address, to_name as name, subject, text_body as text, html_body as html, attempts
+    `select id, ref, to_address as address, to_name as name, subject, text_body as text, html_body as html, attempts,
+       (select png from letter_picture where letter_picture.id = picture_id) as picture,
+       unsubscribe_url as "unsubscribeUrl"
      from message where sent_at is null and given_up_at is null and not_before <= ?
      order by not_before, id limit 1 for update skip locked`,
     [now],
@@ -77,7 +109,7 @@ export async function markNotSent(
   await tx('message')
     .where({ id })
     .update({
-      attempts: tx.raw('attempts + 1'),
+      attempts: tx.raw('least(attempts + 1, 32000)'),
       last_error: outcome.error.slice(0, 500),
       ...(outcome.notBefore ? { not_before: outcome.notBefore } : { given_up_at: outcome.at }),
     });

@@ -2,6 +2,7 @@ import type { LettersPage } from '../../schemas/api/letters';
 import { config } from '../config';
 import type { Tx } from '../db/transaction';
 import { lettersReceived } from '../mail/local-post';
+import { withoutType } from '../mail/letter-type';
 import { messageIdOf } from '../mail/send-outbox';
 import { newestMessages } from '../queries/outbox';
 
@@ -26,7 +27,7 @@ export async function lettersPage(tx: Tx, at: Date): Promise<LettersPage> {
         sentAt: sentAt?.toISOString() ?? null,
         givenUpAt: givenUpAt?.toISOString() ?? null,
         notBefore: notBefore.toISOString(),
-        received: letter ? { at: letter.at, text: letter.text, html: letter.html } : null,
+        received: letter ? { at: letter.at, text: letter.text, html: withoutType(letter.html) } : null,
       };
     }),
   };

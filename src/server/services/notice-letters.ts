@@ -1,0 +1,186 @@
+import { createHash } from 'node:crypto';
+import { adviceFor } from '../../domain/notices/advice';
+import { KINDS } from '../../domain/notices/kinds';
+import { stringsInWords } from '../../domain/notices/words';
+import { energy } from '../../drawings/numbers';
+import { fullTime } from '../../drawings/times';
+import { paths } from '../../schemas/paths';
+import { publicUrl } from '../config';
+import type { Tx } from '../db/transaction';
+import { log } from '../log';
+import { letter, type LetterParts } from '../mail/letter';
+import { PICTURE_WIDTH, stringsPicture } from '../mail/letter-picture';
+import { PICTURE_CID } from '../mail/send-outbox';
+import type { CauseFacts, RecipientRow, TellEvent } from '../queries/notices-tell';
+import { stringsNow } from '../queries/now';
+import { addMessage, keepPicture } from '../queries/outbox';
+import type { Told } from '../../domain/notices/event';
+import { unsubscribeUrl, type LetterOf } from './notice-links';
+
+/** A letter about one thing, at once. */
+
+const STRINGS_DRAWN = 12;
+
+export interface KeptPicture {
+  id: string;
+  alt: string;
+}
+
+/** The drawing of strings as they stand, kept for letters; null where there is nothing to draw. */
+export async function pictureOf(
+  tx: Tx,
+  organisationId: number,
+  stringIds: readonly number[],
+  at: Date,
+): Promise<KeptPicture | null> {
+  if (stringIds.length === 0) return null;
+  const strings = await stringsNow(tx, at, { stringIds: stringIds.slice(0, STRINGS_DRAWN) });
+  try {
+    const picture = await stringsPicture(strings);
+    if (!picture) return null;
+    const sha256 = createHash('sha256').update(picture.png).digest();
+    return { id: await keepPicture(tx, organisationId, { sha256, png: picture.png }), alt: picture.alt };
+  } catch (error) {
+    // a database that fails ends the transaction anyway; a drawing that fails keeps no letter
+    log.warn({ error }, 'a letter goes without its drawing');
+    return null;
+  }
+}
+
+export const drawn = (picture: KeptPicture | null): Pick<LetterParts, 'picture'> =>
+  picture ? { picture: { cid: PICTURE_CID, width: PICTURE_WIDTH, alt: picture.alt } } : {};
+
+export const greetingOf = (person: { name: string }): string => `Hello ${person.name},`;
+
+export interface Telling {
+  told: Told;
+  event: TellEvent;
+  words: { headline: string; body: string };
+  cause: CauseFacts | null;
+  href: string;
+}
+
+const CAUTION = {
+  strong: 'Shutdown is not isolation.',
+  rest: 'Each module and its leads to its unit stay at module voltage. Isolate, lock out, and prove dead with a rated meter; local code and the authority having jurisdiction come first.',
+};
+
+function callWhom({ event }: Telling, person: RecipientRow): [string, string][] {
+  const { contactName, contactPhone, switchPlace, place } = event.site;
+  const contact = [contactName, contactPhone].filter(Boolean).join(', ');
+  return [
+    ...(contact ? [['At the site', contact] as [string, string]] : []),
+    ...(person.organisationPhone
+      ? [[person.organisationName, person.organisationPhone] as [string, string]]
+      : []),
+    ...(switchPlace ? [['Shutdown switch', switchPlace] as [string, string]] : []),
+    ...(place ? [['Where', place] as [string, string]] : []),
+  ];
+}
+
+function hazardParts(telling: Telling, person: RecipientRow): LetterParts {
+  const { words, cause, event, told } = telling;
+  const over = told.phase === 'goes';
+  const zone = person.timeZone;
+  const figures: [string, string][] = [
+    ['Site', event.site.name],
+    ...(cause && cause.units.length > 0
+      ? [['Strings', stringsInWords(cause.units)] as [string, string]]
+      : []),
+    ['Since', fullTime(cause?.since ?? event.at, zone)],
+    ...callWhom(telling, person),
+  ];
+  return {
+    greeting: greetingOf(person),
+    finding: over ? words.headline : `${event.site.name}: ${words.headline}`,
+    hazard: !over,
+    paragraphs: [
+      words.body,
+      ...(over
+        ? []
+        : [
+            `Call the site now: ${event.site.contactPhone || person.organisationPhone || 'the number is not entered in Wakeline'}. Nobody works on these strings until a licensed person has isolated them and proved them dead.`,
+          ]),
+      ...(cause?.evidence && !over ? [cause.evidence] : []),
+    ],
+    caution: CAUTION,
+    figures,
+    action: {
+      words: over ? 'See what happened' : 'Acknowledge and call the site',
+      href: publicUrl() + telling.href,
+    },
+    footer: `You get this letter because you look after sites for ${person.organisationName}. ${KINDS.hazard.fixed ?? ''} It can’t be switched off.`,
+  };
+}
+
+function commonParts(telling: Telling, person: RecipientRow): LetterParts {
+  const { told, event, words, cause } = telling;
+  const advice =
+    cause && told.phase === 'comes' ? adviceFor(cause.kind, cause.sharedPart?.kind ?? null) : null;
+  const customer = person.role === 'customer';
+  const figures: [string, string][] = [
+    ['Site', event.site.name],
+    ...(cause && cause.units.length > 0
+      ? [['Strings', stringsInWords(cause.units)] as [string, string]]
+      : []),
+    [told.phase === 'comes' && cause ? 'Since' : 'When', fullTime(cause?.since ?? event.at, person.timeZone)],
+    ...(cause?.lossWhDay ? [['Costs about', `${energy(cause.lossWhDay)} a day`] as [string, string]] : []),
+  ];
+  return {
+    greeting: greetingOf(person),
+    finding: `${event.site.name}: ${words.headline}`,
+    paragraphs: [words.body, ...(advice ? [advice.today, `On the ladder: ${advice.ladder}`] : [])].filter(
+      Boolean,
+    ),
+    figures,
+    action: { words: customer ? 'See your site' : 'Look at it', href: publicUrl() + telling.href },
+    footer: `You get this letter because ${customer ? `you see ${event.site.name} in Wakeline` : `you look after sites for ${person.organisationName}`} and chose to be told of “${KINDS[told.kind].name}” at once.`,
+  };
+}
+
+/** What every letter of a kind that can be ended carries at its foot. */
+export function wayOutOf(
+  person: RecipientRow,
+  of: LetterOf,
+): { url: string; wayOut: { words: string; href: string } } {
+  const url = unsubscribeUrl(person, of);
+  return { url, wayOut: { words: 'No more letters like this one', href: url } };
+}
+
+/** The link to one's choices, in words for the foot of a letter. */
+export const choicesLine = (): string =>
+  `What you are told of, and when: ${publicUrl()}${paths.accountNotices()}`;
+
+/** Puts the letter about one thing into the outbox. @returns whether it is new */
+export async function writeLetter(
+  tx: Tx,
+  telling: Telling,
+  person: RecipientRow,
+  eventKey: string,
+  picture: KeptPicture | null,
+): Promise<boolean> {
+  const { told, event, words } = telling;
+  const hazard = told.kind === 'hazard';
+  const parts = hazard ? hazardParts(telling, person) : commonParts(telling, person);
+  const out = KINDS[told.kind].fixed ? null : wayOutOf(person, told.kind);
+  const { text, html } = letter({
+    ...parts,
+    ...drawn(picture),
+    footer: `${parts.footer} ${choicesLine()}`,
+    ...(out && { wayOut: out.wayOut }),
+  });
+  const urgent = hazard && told.phase === 'comes';
+  return addMessage(tx, {
+    organisationId: person.organisationId,
+    personId: person.personId,
+    siteId: event.site.id,
+    kind: told.kind,
+    eventKey,
+    to: { address: person.email, name: person.name },
+    subject: `${urgent ? 'NOT SHUTTING DOWN: ' : ''}${event.site.name}: ${words.headline}`,
+    text,
+    html,
+    pictureId: picture?.id ?? null,
+    unsubscribeUrl: out?.url ?? null,
+  });
+}
