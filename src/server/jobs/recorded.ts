@@ -1,5 +1,5 @@
 import { randomUUID } from 'node:crypto';
-import type { Task } from 'graphile-worker';
+import type { JobHelpers, Task } from 'graphile-worker';
 import { z } from 'zod';
 import { database } from '../db/pools';
 import { isDatabaseAway } from '../errors';
@@ -18,7 +18,7 @@ export type Done = Record<string, number>;
  * A task that writes down each of its runs: when it began, how it ended, what it did. A failure is written down and
  * thrown on, so that the queue tries again.
  */
-export function recorded(task: string, work: (payload: unknown) => Promise<Done>): Task {
+export function recorded(task: string, work: (payload: unknown, helpers: JobHelpers) => Promise<Done>): Task {
   return async (payload, helpers) => {
     const db = database('ingest');
     const siteId = sitePayload.safeParse(payload).data?.siteId ?? null;
@@ -26,7 +26,7 @@ export function recorded(task: string, work: (payload: unknown) => Promise<Done>
     const id = await beginRun(db, { task, siteId, attempt, worker: WORKER, at: new Date() });
     let done: Done = {};
     try {
-      done = await work(payload);
+      done = await work(payload, helpers);
       await endRun(db, id, { at: new Date(), failed: null, done });
     } catch (error) {
       const failed = error instanceof Error ? error.message : String(error);

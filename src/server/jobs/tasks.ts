@@ -4,7 +4,6 @@ import { database } from '../db/pools';
 import { sendDue } from '../mail/send-outbox';
 import { forgetRunsBefore } from '../queries/job-runs';
 import { sendCalls } from '../services/webhook-send';
-import { sendCalls } from '../services/webhook-send';
 import { checkClosedCases } from '../services/check-closed-cases';
 import { judgeAllCauses, judgeSiteCauses } from './judge-causes';
 import { keepDays, mergeLateFrames } from './keep-days';
@@ -12,7 +11,6 @@ import { nightsDue } from './nights-due';
 import { judgeNight } from './output-night';
 import { recorded, type Done } from './recorded';
 import { rollUpClosed, rollUpDirty } from './roll-up';
-import { tell, tellGathered } from './tell';
 import { tell, tellGathered } from './tell';
 
 /**
@@ -79,24 +77,6 @@ const kinds = {
       const { siteId, day } = ofNight.parse(payload);
       return judgeNight(siteId, day, new Date());
     },
-  },
-  tell: {
-    title: 'Tell people and other systems of what happened',
-    cron: '* * * * *',
-    queue: 'tell',
-    run: () => tell(() => new Date()),
-  },
-  tell_gathered: {
-    title: 'Write the letters that gather a day or a night',
-    cron: '* * * * *',
-    queue: 'tell',
-    run: () => tellGathered(new Date()),
-  },
-  send_calls: {
-    title: 'Call other systems',
-    cron: '* * * * *',
-    queue: 'calls',
-    run: async () => ({ ...(await sendCalls(() => new Date())) }),
   },
   tell: {
     title: 'Tell people and other systems of what happened',

@@ -151,14 +151,22 @@ export interface NightSite {
   altitude: number;
   /** The newest night that was judged, yyyy-mm-dd. */
   judged: string | null;
+  /** Yesterday and today where the site is: local dates and where they begin and end, epoch s. */
+  days: { day: string; fromS: number; toS: number }[];
 }
 
-/** Operating sites, and how far their nights are judged. */
-export async function nightSites(tx: Tx): Promise<NightSite[]> {
+/** Operating sites, their days at this instant, and how far their nights are judged. */
+export async function nightSites(tx: Tx, at: Date): Promise<NightSite[]> {
   const { rows } = await tx.raw<{ rows: NightSite[] }>(
     `select s.id, s.time_zone as "timeZone", s.latitude, s.longitude, s.altitude,
-            (select to_char(max(n.day), 'YYYY-MM-DD') from output_night n where n.site_id = s.id) as judged
+            (select to_char(max(n.day), 'YYYY-MM-DD') from output_night n where n.site_id = s.id) as judged,
+            (select json_agg(json_build_object('day', to_char(d.day, 'YYYY-MM-DD'),
+               'fromS', extract(epoch from d.day::timestamp at time zone s.time_zone)::float8,
+               'toS', extract(epoch from (d.day + 1)::timestamp at time zone s.time_zone)::float8) order by d.day)
+             from (select (:at::timestamptz at time zone s.time_zone)::date - back as day
+                   from generate_series(0, 1) back) d) as days
      from site s where s.stage = 'operating' and exists (select from string where site_id = s.id) order by s.id`,
+    { at },
   );
   return rows;
 }

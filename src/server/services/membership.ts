@@ -224,6 +224,18 @@ export async function membershipUnits(
   return { site, units: units.map((j) => j.view) };
 }
 
+/** The same of a site's number and a span that ends at `at`, with who may stand in whose place: for jobs. */
+export async function membershipAt(
+  tx: Tx,
+  siteId: number,
+  hours: number,
+  at: Date,
+): Promise<{ units: MembershipUnit[]; suspects: MembershipSuspect[] }> {
+  const data = await read(tx, siteId, hours, at);
+  const judgement = judge(data);
+  return { units: judgement.units.map((j) => j.view), suspects: suspectsOf(judgement, data.steps) };
+}
+
 /**
  * Which string's current each unit carried in the last hours, with the evidence of those that don't fit.
  * @throws AppError not_found

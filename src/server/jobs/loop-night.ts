@@ -1,0 +1,171 @@
+import type { FoundCause } from '../../domain/causes/changes';
+import { median } from '../../domain/output/robust';
+import {
+  fitLoop,
+  judgeLoop,
+  type LoopFinding,
+  type LoopFit,
+  type LoopSample,
+} from '../../domain/output/resistance';
+import type { PlaneReference } from '../../domain/output/plane-reference';
+import { asIngest } from '../db/transaction';
+import { pastFits, type LoopFitRow } from '../queries/loop-fits';
+import { loopRows, type LoopRow, type OutputString } from '../queries/output-series';
+import { loopCause } from './night-findings';
+import type { NightSeries, NightString, SeriesSite } from './plane-series';
+
+/** Resistance of every string's loop, fitted over the last three sunny days when a sunny day ends. */
+
+/** Hours of full sun, by what the strings should have made, that make a sunny day. */
+const SUNNY_H = 2.2;
+const SUNNY_DAYS = 3;
+const STRINGS_A_READ = 40;
+/** Connectors and leads from module to module, ohm each: common practice. */
+const LEAD_OHM = 0.002;
+
+export interface LoopJudged {
+  stringRef: string;
+  outcome: LoopFinding['outcome'];
+  row: LoopFitRow | null;
+  cause: ((siteRef: string) => FoundCause) | null;
+}
+
+export async function fitLoops(
+  site: SeriesSite,
+  series: NightSeries,
+  planes: readonly { reference: PlaneReference; index: number; members: readonly OutputString[] }[],
+): Promise<LoopJudged[]> {
+  const last = series.days.length - 1;
+  const sunny = series.days.map((_, d) => {
+    const hours = planes.flatMap((p) => {
+      const power = p.members.reduce((sum, m) => sum + m.powerRef, 0);
+      const wh = p.reference.expectedWh[p.index]?.[d] ?? 0;
+      return power > 0 && wh > 0 ? [wh / power] : [];
+    });
+    return hours.length > 0 && median(hours) >= SUNNY_H;
+  });
+  const three = sunny.flatMap((yes, d) => (yes ? [d] : [])).slice(-SUNNY_DAYS);
+  const first = three[0];
+  const loops = series.strings.filter((n) => n.string.measures === 'output' || n.string.measures === 'both');
+  if (loops.length < 1 || first === undefined || three.length < SUNNY_DAYS || !sunny[last]) return [];
+  const samples = await readSamples(site, series, loops, first);
+  const fits = new Map(loops.map((n) => [n.string.id, fitLoop(samples.get(n.string.id) ?? [])]));
+  const fromDay = series.days[first] ?? '';
+  const pasts = new Map(
+    (await asIngest((tx) => pastFits(tx, site.id, fromDay))).map((p) => [p.stringId, p.fit]),
+  );
+  const days = last - first + 1;
+  return loops.map(({ string }): LoopJudged => {
+    const fit = fits.get(string.id) ?? 'no samples';
+    const past = pasts.get(string.id) ?? null;
+    const like = loops.filter((o) => o.string.id !== string.id && o.string.unitTypeId === string.unitTypeId);
+    const known = like.flatMap((o): [LoopFit, number][] => {
+      const f = fits.get(o.string.id);
+      return f === undefined || typeof f === 'string' ? [] : [[f, o.string.id]];
+    });
+    const finding = judgeLoop(fit, {
+      past,
+      siblingsOhm: known.map(([f]) => f.ohm),
+      siblingsGrowthOhm: known.flatMap(([f, id]) => {
+        const before = pasts.get(id);
+        return before ? [f.ohm - before.ohm] : [];
+      }),
+      cableOhm: string.cableOhm + LEAD_OHM * (string.slots + 1),
+    });
+    const found = finding.outcome === 'excess' || finding.outcome === 'growing';
+    const ohm = finding.above?.ohm ?? 0;
+    const lossWhDay =
+      ((samples.get(string.id) ?? []).reduce((sum, s) => sum + s.ownA ** 2, 0) * ohm * 300) / 3600 / days;
+    return {
+      stringRef: string.ref,
+      outcome: finding.outcome,
+      row:
+        typeof fit === 'string'
+          ? null
+          : { stringId: string.id, fromDay, day: series.days[last] ?? '', fit, finding },
+      cause: found
+        ? (siteRef) => loopCause(siteRef, string, finding, series.boundsS[first] ?? 0, lossWhDay)
+        : null,
+    };
+  });
+}
+
+/** Reports of the loops from day `first` on, with what the other strings of the input carried at that moment. */
+async function readSamples(
+  site: SeriesSite,
+  series: NightSeries,
+  loops: readonly NightString[],
+  first: number,
+): Promise<Map<number, LoopSample[]>> {
+  const span = {
+    from: new Date((series.boundsS[first] ?? 0) * 1000),
+    to: new Date((series.boundsS.at(-1) ?? 0) * 1000),
+  };
+  const samples = new Map<number, LoopSample[]>();
+  // strings of one input are read together: each needs the others' currents
+  const byInput = new Map<number, NightString[]>();
+  for (const n of series.strings)
+    byInput.set(n.string.inputId, [...(byInput.get(n.string.inputId) ?? []), n]);
+  const wanted = [...byInput.values()].filter((group) => group.some((n) => loops.includes(n)));
+  for (let i = 0; i < wanted.length;) {
+    const some: NightString[] = [];
+    while (i < wanted.length && some.length < STRINGS_A_READ) some.push(...(wanted[i++] ?? []));
+    const rows = await asIngest((tx) =>
+      loopRows(
+        tx,
+        some.map((n) => n.string.id),
+        span,
+        site.reportIntervalS / 2,
+      ),
+    );
+    const byString = new Map<number, LoopRow[]>();
+    for (const r of rows) byString.set(r.stringId, [...(byString.get(r.stringId) ?? []), r]);
+    for (const n of some) {
+      const others = (byInput.get(n.string.inputId) ?? []).filter((o) => o !== n);
+      samples.set(
+        n.string.id,
+        samplesOf(
+          n,
+          byString.get(n.string.id) ?? [],
+          others.map((o) => byString.get(o.string.id) ?? []),
+          series,
+        ),
+      );
+    }
+  }
+  return samples;
+}
+
+const BIN_S = 300;
+const binOf = (atS: number): number => Math.floor(atS / BIN_S);
+
+function samplesOf(
+  n: NightString,
+  rows: readonly LoopRow[],
+  others: readonly (readonly LoopRow[])[],
+  series: NightSeries,
+): LoopSample[] {
+  const typical = (row: LoopRow): number => {
+    const known = row.current.flatMap((mA) => (mA === null ? [] : [mA / 1000]));
+    return known.length >= row.current.length / 2 && known.length > 0 ? median(known) : NaN;
+  };
+  const beside = others.map((list) => new Map(list.map((r) => [binOf(r.atS), typical(r)])));
+  return rows.flatMap((row): LoopSample[] => {
+    const q = Math.floor((row.atS - (series.boundsS[0] ?? 0)) / 900);
+    if (n.excluded[q] !== 0 || row.voltage.length !== n.string.slots) return [];
+    const sumV = row.voltage.reduce<number>((sum, cV) => sum + (cV === null ? NaN : cV / 100), 0);
+    const othersA = beside.reduce((sum, of) => sum + (of.get(binOf(row.atS)) ?? NaN), 0);
+    const ownA = typical(row);
+    if (row.inputVoltage === null || Number.isNaN(sumV + ownA + othersA)) return [];
+    return [
+      {
+        atS: row.atS,
+        sumV,
+        inputV: row.inputVoltage / 10,
+        ownA,
+        othersA,
+        ...(row.inputCurrent !== null && { inputA: row.inputCurrent / 100 }),
+      },
+    ];
+  });
+}
