@@ -81,6 +81,8 @@ export const paths = {
   status: () => '/status',
   tryReading: () => '/try-a-reading',
   methods: () => '/methods',
+  /** What other programs can ask for, and how. */
+  developers: () => '/developers',
   api: {
     signIn: () => '/api/sign-in',
     signOut: () => '/api/sign-out',
@@ -171,6 +173,10 @@ export const paths = {
     accountEmail: () => '/api/account/email',
     accountSessions: () => '/api/account/sessions',
     accountSecondFactor: () => '/api/account/second-factor',
+    accountTokens: () => '/api/account/tokens',
+    accountToken: (token: string) => `/api/account/tokens/${token}`,
+    /** Tokens of somebody else: a manager ends them all. */
+    personTokens: (person: string) => `/api/people/${person}/tokens`,
     shareLinks: (site: string) => `/api/sites/${site}/share-links`,
     shareLink: (link: string) => `/api/share-links/${link}`,
     shared: (token: string) => `/api/shared/${token}`,
@@ -208,6 +214,9 @@ export const paths = {
     /** What whoever is called next gets: one PDF, or a ZIP with the readings and photos beside it. */
     casePack: (caseRef: string, form: 'pdf' | 'zip') => `/api/cases/${caseRef}/evidence.${form}`,
     siteCases: (site: string) => `/api/sites/${site}/cases`,
+    /** For other programs, by token. */
+    v1: (path: string) => `/api/v1${path}`,
+    v1Document: () => '/api/v1/openapi.json',
     /** For loggers that report by HTTPS. */
     v1Ingest: () => '/api/v1/ingest',
     v1IngestRoster: () => '/api/v1/ingest/roster',

@@ -14,6 +14,21 @@ export const FIGURES: readonly Route[] = [
     'site',
     (t) => `/api/sites/${t.site}/month-report.pdf?month=2026-10`,
   ),
+  get(
+    'api/my-site/[site]/month-report.pdf.ts',
+    'papers.read',
+    'site',
+    (t) => `/api/my-site/${t.site}/month-report.pdf?month=2026-10`,
+  ),
+  {
+    file: 'api/my-site/[site]/letter.ts',
+    method: 'PUT',
+    permission: 'customer_page.read',
+    of: 'site',
+    path: (t) => `/api/my-site/${t.site}/letter`,
+    body: { every: 'month' },
+    served: [200],
+  },
   {
     file: 'api/sites/[site]/tariffs/index.ts',
     method: 'POST',

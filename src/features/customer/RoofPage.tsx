@@ -7,7 +7,17 @@ import { queryClient } from '../../lib/query-client';
 import { clocksDiffer, useReaderZone } from '../../components/ui/reader-zone';
 import { paths } from '../../schemas/paths';
 import type { CustomerSite } from '../../schemas/api/customer';
-import { careWords, lifeCard, monthCard, switchWords, testWords, workingTimeCard } from './cards';
+import {
+  careWords,
+  lifeCard,
+  monthCard,
+  monthWords,
+  switchWords,
+  testWords,
+  workingTimeCard,
+  worthCard,
+  yearCard,
+} from './cards';
 import { FigureSheet } from '../../components/ui/FigureSheet';
 import { TodaySheet } from './TodaySheet';
 import { customerWords } from './words';
@@ -17,12 +27,51 @@ const EVERY_MS = 30_000;
 
 /** The papers of the handover: the newest first, earlier ones below. */
 function Papers({ roof }: { roof: CustomerSite }) {
+  if (roof.papers.length === 0 && roof.months.length === 0) return null;
+  return (
+    <Sheet id="papers" title="Papers">
+      <HandoverPapers roof={roof} />
+      <MonthReports roof={roof} />
+    </Sheet>
+  );
+}
+
+function MonthReports({ roof }: { roof: CustomerSite }) {
+  const [newest, ...earlier] = roof.months;
+  if (!newest) return null;
+  const link = (month: string) => (
+    <a
+      href={paths.api.customerMonth(roof.site.id, month)}
+      className="inline-flex min-h-[44px] items-center text-petrol hover:underline"
+    >
+      {monthWords(month)}, PDF
+    </a>
+  );
+  return (
+    <div className="mt-2">
+      <p>What your roof made, month by month:</p>
+      <p>{link(newest)}</p>
+      {earlier.length > 0 && (
+        <details>
+          <summary className="target cursor-pointer text-petrol">Earlier months</summary>
+          <ul className="grid grid-cols-2 gap-x-4 sm:grid-cols-3">
+            {earlier.map((month) => (
+              <li key={month}>{link(month)}</li>
+            ))}
+          </ul>
+        </details>
+      )}
+    </div>
+  );
+}
+
+function HandoverPapers({ roof }: { roof: CustomerSite }) {
   const [newest, ...earlier] = roof.papers;
   if (!newest) return null;
   const file = (paper: CustomerSite['papers'][number]) => `${paths.api.paper(paper.ref)}?form=pdf`;
   const day = (paper: CustomerSite['papers'][number]) => longDate(paper.madeAt, roof.site.timeZone);
   return (
-    <Sheet id="papers" title="Papers">
+    <>
       <p>
         How your system is built, what was measured, and how to look after it, as of {day(newest)}. Keep a
         copy where the people who work on the roof will find it.
@@ -52,7 +101,7 @@ function Papers({ roof }: { roof: CustomerSite }) {
           </ul>
         </details>
       )}
-    </Sheet>
+    </>
   );
 }
 
@@ -103,8 +152,10 @@ export function RoofPage({ initial }: { initial: CustomerSite }) {
         <TodaySheet today={roof.today} at={roof.now.at} timeZone={site.timeZone} />
         <div className="grid gap-4 sm:grid-cols-3">
           <FigureSheet card={monthCard(roof.month)} />
+          <FigureSheet card={yearCard(roof.year, roof.life)} />
           <FigureSheet card={lifeCard(roof.life)} />
           <FigureSheet card={workingTimeCard(roof.life)} />
+          {roof.worth && <FigureSheet card={worthCard(roof.worth)} />}
         </div>
         <div className="grid gap-4 sm:grid-cols-2">
           <Sheet id="shutdown" title="Rapid shutdown">

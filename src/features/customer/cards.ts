@@ -1,8 +1,7 @@
 import type { Card } from '../../components/ui/FigureSheet';
-import { counted, energy, percent } from '../../drawings/numbers';
+import { counted, energy, money, percent } from '../../drawings/numbers';
 import { longDate } from '../../drawings/times';
 import type { CustomerSite } from '../../schemas/api/customer';
-import type { SharedSite } from '../../schemas/api/share';
 
 /** Words of the cards under the day's curve: month, life, working time, last shutdown test, who looks after it. */
 
@@ -10,14 +9,16 @@ const hours = (minutes: number): string =>
   minutes < 90 ? `${Math.round(minutes)} min` : `${Math.round(minutes / 60)} h`;
 /** A plain day, which belongs to no zone: 2026-03-12 → 12 March 2026. */
 export const dayWords = (day: string): string => longDate(`${day}T12:00:00Z`, 'UTC');
-const monthWords = (day: string): string =>
+const nameOfMonth = (day: string): string =>
   new Intl.DateTimeFormat('en-GB', { month: 'long', timeZone: 'UTC' }).format(new Date(`${day}T12:00:00Z`));
+/** 2026-11 → November 2026. */
+export const monthWords = (month: string): string => `${nameOfMonth(`${month}-01`)} ${month.slice(0, 4)}`;
 
 /** Within ±2.5 % of what the weather allowed counts as about the same: the model is no better than that. */
 const ABOUT = 0.025;
 
 export function monthCard(month: CustomerSite['month']): Card {
-  const label = monthWords(month.first);
+  const label = nameOfMonth(month.first);
   const figure = energy(month.energy);
   if (month.days === 0) return { label, figure, note: 'no day of this month is complete yet' };
   if (!month.expected || month.expected <= 0)
@@ -43,13 +44,28 @@ export function lifeCard(life: CustomerSite['life']): Card {
 }
 
 /** This calendar year so far; where the roof was switched on in it, since then. */
-export function yearCard(year: SharedSite['year'], life: CustomerSite['life']): Card {
+export function yearCard(year: CustomerSite['year'], life: CustomerSite['life']): Card {
   if (!year || !life) return { label: 'This year', figure: '–', note: 'not switched on yet' };
   const since = life.countedFrom ?? life.from;
   return {
     label: year.first.slice(0, 4),
     figure: energy(year.energy),
     note: since > year.first ? `since ${dayWords(since)}` : 'since the first of January',
+  };
+}
+
+/** What the energy was worth, at the price that the organisation has entered for this roof. */
+export function worthCard(worth: NonNullable<CustomerSite['worth']>): Card {
+  const { currency, month, year, life, partly } = worth;
+  const parts = [
+    month === null ? '' : `${money(month, currency)} this month`,
+    year === null ? '' : `${money(year, currency)} this year`,
+    partly ? 'days without a price left out' : '',
+  ];
+  return {
+    label: 'Worth since switch-on',
+    figure: money(life, currency),
+    note: parts.filter(Boolean).join(', '),
   };
 }
 

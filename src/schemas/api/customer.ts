@@ -1,4 +1,5 @@
 import { z } from 'zod';
+import { EVERY } from '../../domain/output/letter-period';
 import { commandNow, id } from './now';
 
 /** What the page for the owner of a roof rests on. SI units; times ISO 8601 in UTC, days as 2026-11-03 at the site. */
@@ -71,6 +72,8 @@ export const customerSite = z.object({
     measured: z.number(), // Wh on the days that have an expectation
     days: z.int(),
   }),
+  /** This calendar year so far; null: not switched on yet. */
+  year: z.object({ first: day, energy: z.number() }).nullable(), // Wh
   life: z
     .object({
       from: day,
@@ -83,6 +86,17 @@ export const customerSite = z.object({
       completeness: z.number(), // 0 … 1 of the days' readings that came
     })
     .nullable(), // null: not switched on yet
+  /** What the energy was worth at the price of its day; null: no currency or no price is set. */
+  worth: z
+    .object({
+      currency: z.string(),
+      month: z.number().nullable(),
+      year: z.number().nullable(),
+      life: z.number().nullable(),
+      /** Some of it has no price. */
+      partly: z.boolean(),
+    })
+    .nullable(),
   lastTest: z
     .object({
       at: time,
@@ -93,6 +107,8 @@ export const customerSite = z.object({
     .nullable(),
   /** Handover packs, newest first. */
   papers: z.array(z.object({ ref: id, version: z.int(), madeAt: time, pdfBytes: z.int() })),
+  /** Months that a report can be had of, newest first, as 2026-11. */
+  months: z.array(z.string()),
 });
 export type CustomerSite = z.infer<typeof customerSite>;
 
@@ -100,3 +116,6 @@ export const customerSites = z.array(
   z.object({ id, name: z.string(), place: z.string(), timeZone: z.string(), now: customerNow }),
 );
 export type CustomerSites = z.infer<typeof customerSites>;
+
+export const letterChoice = z.strictObject({ every: z.enum(EVERY).nullable() });
+export type LetterChoice = z.infer<typeof letterChoice>;

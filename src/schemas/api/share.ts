@@ -26,8 +26,7 @@ export const sharedSite = z.strictObject({
   now: sharedNow,
   today: customerSite.shape.today,
   month: customerSite.shape.month,
-  /** This calendar year so far; null: not switched on yet. */
-  year: z.object({ first: z.iso.date(), energy: z.number() }).nullable(), // Wh
+  year: customerSite.shape.year,
   life: customerSite.shape.life,
 });
 export type SharedSite = z.infer<typeof sharedSite>;

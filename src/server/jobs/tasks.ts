@@ -3,6 +3,7 @@ import { z } from 'zod';
 import { database } from '../db/pools';
 import { sendDue } from '../mail/send-outbox';
 import { forgetRunsBefore } from '../queries/job-runs';
+import { writeRoofLetters } from '../services/roof-letters';
 import { sendCalls } from '../services/webhook-send';
 import { checkClosedCases } from '../services/check-closed-cases';
 import { judgeAllCauses, judgeSiteCauses } from './judge-causes';
@@ -107,6 +108,12 @@ const kinds = {
     cron: '*/10 * * * *',
     queue: 'check_cases',
     run: () => checkClosedCases(new Date()),
+  },
+  roof_letters: {
+    title: 'Write the weekly and monthly letters about roofs',
+    cron: '*/10 * * * *',
+    queue: 'roof_letters',
+    run: () => writeRoofLetters(new Date()),
   },
   keep_days: {
     title: 'Make room for coming days, give up readings past their time',

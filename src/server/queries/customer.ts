@@ -19,6 +19,7 @@ export interface RoofRow {
   ruleSet: CustomerSite['site']['ruleSet'];
   organisation: string;
   organisationPhone: string | null;
+  currency: string | null;
   strings: number;
   modules: number;
   reporting: number;
@@ -45,7 +46,7 @@ export async function roofRows(tx: Tx, at: Date, ref?: string): Promise<RoofRow[
     `select site.id as "siteId", site.ref, site.name, site.place, site.time_zone as "timeZone",
             site.latitude, site.longitude, site.altitude, site.switched_on_on::text as "switchedOnOn",
             site.shutdown_switch_place as "shutdownSwitchPlace", site.rule_set as "ruleSet",
-            o.name as organisation, o.phone as "organisationPhone",
+            o.name as organisation, o.phone as "organisationPhone", o.currency,
             (select count(*)::int from string s where s.site_id = site.id) as strings,
             built.modules, built.reporting,
             (select count(*)::int from string_judgement j

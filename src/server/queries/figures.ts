@@ -263,3 +263,12 @@ export async function fleetWorth(
   );
   return new Map(rows.map(({ siteId, ...worth }) => [siteId, worth]));
 }
+
+/** Months of a site that have a day on record, newest first, as 2026-11. */
+export async function monthsWithDays(tx: Tx, siteId: number, most: number): Promise<string[]> {
+  const { rows } = await tx.raw<{ rows: { month: string }[] }>(
+    `select distinct to_char(day, 'YYYY-MM') as month from site_day where site_id = :siteId order by 1 desc limit :most`,
+    { siteId, most },
+  );
+  return rows.map((r) => r.month);
+}

@@ -5,6 +5,7 @@ import {
   ownBestScale,
   type ArrayAtPlace,
 } from '../../domain/output/clear-day';
+import { dayAfter } from '../../domain/output/period';
 import { sunRiseSet } from '../../domain/photovoltaics/sun/rise-set';
 import type { CustomerNow, CustomerSite, CustomerSites } from '../../schemas/api/customer';
 import type { SiteNow } from '../../schemas/api/now';
@@ -20,12 +21,15 @@ import {
   type QuarterRow,
   type RoofRow,
 } from '../queries/customer';
+import { fleetWorth, monthsWithDays } from '../queries/figures';
 import { packsOf } from '../queries/handover';
 import { sitesNow } from '../queries/sites-now';
 
 /** Days of the site's own quarters that its clear day is scaled to. */
 const OWN_BEST_DAYS = 60;
 const DAY_MS = 86_400_000;
+/** Months whose report is offered. */
+const REPORTS_SHOWN = 13;
 /** Between the days whose daylight is reckoned; those between are taken to be alike. */
 const DAYLIGHT_STEP_DAYS = 7;
 
@@ -121,6 +125,26 @@ function lifeOf(roof: RoofRow, days: DaysRow, today: number): CustomerSite['life
   };
 }
 
+async function worthOfRoof(
+  tx: Tx,
+  roof: RoofRow,
+  from: { month: string; year: string; before: string },
+): Promise<CustomerSite['worth']> {
+  if (!roof.currency) return null;
+  const { before } = from;
+  const span = async (first: string) =>
+    (await fleetWorth(tx, [roof.siteId], { from: first, before })).get(roof.siteId);
+  const life = await span(roof.switchedOnOn ?? from.year);
+  if (!life) return null;
+  return {
+    currency: roof.currency,
+    month: (await span(from.month))?.money ?? null,
+    year: (await span(from.year))?.money ?? null,
+    life: life.money,
+    partly: life.unpriced > 0,
+  };
+}
+
 /**
  * What the page for the owner of a roof rests on. Days are the site's own; today is counted from its quarters,
  * earlier days from their sums.
@@ -140,6 +164,13 @@ export async function customerSite(tx: Tx, ref: string, at: Date): Promise<Custo
   const month = await daysOf(tx, roof.siteId, monthFirst, day.day);
   const life = await daysOf(tx, roof.siteId, roof.switchedOnOn ?? day.day, day.day);
   const today = todayOf(roof, day, quarters);
+  const yearFirst = `${day.day.slice(0, 4)}-01-01`;
+  const year = await daysOf(
+    tx,
+    roof.siteId,
+    roof.switchedOnOn && roof.switchedOnOn > yearFirst ? roof.switchedOnOn : yearFirst,
+    day.day,
+  );
   return {
     site: {
       id: roof.ref,
@@ -161,7 +192,9 @@ export async function customerSite(tx: Tx, ref: string, at: Date): Promise<Custo
       measured: month.measured,
       days: month.days,
     },
+    year: roof.switchedOnOn ? { first: yearFirst, energy: year.energy + (today.energy ?? 0) } : null,
     life: lifeOf(roof, life, today.energy ?? 0),
+    worth: await worthOfRoof(tx, roof, { month: monthFirst, year: yearFirst, before: dayAfter(day.day) }),
     lastTest: await lastTestOf(tx, roof.siteId),
     papers: (await packsOf(tx, roof.siteId)).map((p) => ({
       ref: p.ref,
@@ -169,6 +202,7 @@ export async function customerSite(tx: Tx, ref: string, at: Date): Promise<Custo
       madeAt: p.madeAt.toISOString(),
       pdfBytes: p.pdfBytes,
     })),
+    months: await monthsWithDays(tx, roof.siteId, REPORTS_SHOWN),
   };
 }
 

@@ -11,7 +11,6 @@ import { takeSharedRead, takeTokenTry } from '../auth/limits';
 import { newToken, TOKEN_PATTERN, tokenHash } from '../auth/secret-link';
 import { asActor, asSignIn, type Tx } from '../db/transaction';
 import { AppError, found } from '../errors';
-import { daysOf } from '../queries/customer';
 import { addAuditEntry } from '../queries/people';
 import {
   addShareLink,
@@ -137,10 +136,7 @@ export async function sharedPage(token: string, at: Date, address: string): Prom
   return asActor({ organisationId: link.organisationId, sites: [link.siteId] }, async (tx) => {
     const ref = await siteRefOf(tx, link.siteId);
     if (!ref) throw gone();
-    const { site, care, now, today, month, life } = await customerSite(tx, ref, at);
-    const yearFirst = `${today.day.slice(0, 4)}-01-01`;
-    const from = site.switchedOnOn && site.switchedOnOn > yearFirst ? site.switchedOnOn : yearFirst;
-    const year = await daysOf(tx, link.siteId, from, today.day);
+    const { site, care, now, today, month, year, life } = await customerSite(tx, ref, at);
     return {
       name: site.name,
       timeZone: site.timeZone,
@@ -150,7 +146,7 @@ export async function sharedPage(token: string, at: Date, address: string): Prom
       now: { ...now, commands: now.commands.map(({ inForce, since }) => ({ inForce, since })) },
       today,
       month,
-      year: life && { first: yearFirst, energy: year.energy + (today.energy ?? 0) },
+      year,
       life,
     };
   });

@@ -1,0 +1,10 @@
+import { monthQuery } from '../../../../schemas/api/figures';
+import { siteParams } from '../../../../schemas/api/site';
+import { endpoint } from '../../../../server/http/endpoint';
+import { monthReport } from '../../../../server/reports/figures/month-report';
+import { siteFigures } from '../../../../server/services/figures';
+
+export const GET = endpoint(
+  { permission: 'papers.read', params: siteParams, query: monthQuery },
+  async ({ tx, params, query }) => monthReport(await siteFigures(tx, params.site, query.month, new Date())),
+);
