@@ -125,7 +125,14 @@ export function wrongStringCauses(
   const done = new Set<string>();
   return misfits.flatMap((s): FoundCause[] => {
     if (done.has(idOf(s))) return [];
-    const other = s.counterpart && misfits.find((m) => idOf(m) === idOf(s.counterpart!));
+    const pair = s.counterpart;
+    const facing = misfits.filter((m) => m.string === s.otherString && m.otherString === s.string);
+    const other = pair
+      ? misfits.find((m) => idOf(m) === idOf(pair))
+      : facing.length === 1 &&
+          misfits.filter((m) => m.string === s.string && m.otherString === s.otherString).length === 1
+        ? facing[0]
+        : undefined;
     const both = other ? [s, other] : [s];
     both.forEach((m) => done.add(idOf(m)));
     const unit = (m: MembershipSuspect): FoundUnit => ({
