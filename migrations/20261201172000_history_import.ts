@@ -113,8 +113,9 @@ export async function up(knex: Knex): Promise<void> {
   // an attempt says nothing of whose it was: seen by whose loggers speak from the same address
   await enable('wrong_token', `exists (select from logger where logger.last_address = wrong_token.address)`);
   await knex.raw(`
-    grant insert, update (undone_by, undone_at) on history_import to wakeline_app;
-    grant insert on history_series to wakeline_app;
+    grant insert, update (rows, readings, cells_left_out, doubles, from_at, to_at, undone_by, undone_at)
+      on history_import to wakeline_app;
+    grant insert, update (step_s) on history_series to wakeline_app;
     grant insert, delete on history_reading, history_day to wakeline_app;
     grant select (ref, name, made_by, ended_by, last_used_at, last_address), update (ended_by)
       on ingest_token to wakeline_app;

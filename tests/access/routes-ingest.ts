@@ -35,4 +35,34 @@ export const INGEST_LOGGERS_HISTORY: readonly Route[] = [
     body: { reason: 'trial' },
     served: [404],
   },
+  get(
+    'sites/[site]/history-import.astro',
+    'history.import',
+    'site',
+    (t) => `/sites/${t.site}/history-import`,
+  ),
+  get(
+    'api/sites/[site]/history-imports/index.ts',
+    'history.import',
+    'site',
+    (t) => `/api/sites/${t.site}/history-imports`,
+  ),
+  {
+    file: 'api/sites/[site]/history-imports/index.ts',
+    method: 'POST',
+    permission: 'history.import',
+    of: 'site',
+    path: (t) => `/api/sites/${t.site}/history-imports`,
+    body: {}, // no order in its first line
+    served: [422],
+  },
+  {
+    file: 'api/sites/[site]/history-imports/[made]/undo.ts',
+    method: 'POST',
+    permission: 'history.import',
+    of: 'site',
+    path: (t) => `/api/sites/${t.site}/history-imports/${NO_SUCH}/undo`,
+    body: { reason: '' },
+    served: [404],
+  },
 ];

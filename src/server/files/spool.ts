@@ -16,58 +16,71 @@ export interface Spooled {
 }
 
 const megabytes = (bytes: number): number => Math.round(bytes / (1024 * 1024));
-const tooLarge = (limit: number): AppError =>
+const SMALLER = 'Take the photo with a lower resolution, or make the file smaller.';
+const tooLarge = (limit: number, remedy: string): AppError =>
   new AppError('too_large', {
-    message: `The file is larger than ${megabytes(limit)} MB. Take the photo with a lower resolution, or make the file smaller.`,
+    message: `The file is larger than ${megabytes(limit)} MB. ${remedy}`,
     fields: [{ field: 'body', message: `At most ${megabytes(limit)} MB` }],
   });
 
 /**
- * Writes a body to a file of its own, hands it to `use` and takes it away again. Cut off where it grows past `limit`,
- * whatever its length header says.
+ * Writes a body to a file of its own, which stays until `remove` is called. Cut off where it grows past `limit`,
+ * whatever its length header says; `remedy` says what would do.
  * @throws AppError too_large · invalid (nothing came, or it broke off)
  */
-export async function spooled<T>(
+export async function spool(
   request: Request,
   limit: number,
-  use: (file: Spooled) => Promise<T>,
-): Promise<T> {
-  if (Number(request.headers.get('content-length') ?? 0) > limit) throw tooLarge(limit);
+  remedy = SMALLER,
+): Promise<Spooled & { remove: () => Promise<void> }> {
+  if (Number(request.headers.get('content-length') ?? 0) > limit) throw tooLarge(limit, remedy);
   if (!request.body)
     throw new AppError('invalid', {
       message: 'No file came. Choose one and send it again.',
       fields: [{ field: 'body', message: 'Send the file as the body.' }],
     });
   const folder = await mkdtemp(path.join(tmpdir(), 'wakeline-file-'));
+  const remove = () => rm(folder, { recursive: true, force: true });
+  const file = path.join(folder, 'body');
+  let bytes = 0;
+  let head = Buffer.alloc(0);
+  const counted = new Transform({
+    transform(chunk: Buffer, _encoding, done) {
+      bytes += chunk.length;
+      if (bytes > limit) return done(tooLarge(limit, remedy));
+      if (head.length < SNIFF_BYTES)
+        head = Buffer.concat([head, chunk.subarray(0, SNIFF_BYTES - head.length)]);
+      done(null, chunk);
+    },
+  });
   try {
-    const file = path.join(folder, 'body');
-    let bytes = 0;
-    let head = Buffer.alloc(0);
-    const counted = new Transform({
-      transform(chunk: Buffer, _encoding, done) {
-        bytes += chunk.length;
-        if (bytes > limit) return done(tooLarge(limit));
-        if (head.length < SNIFF_BYTES)
-          head = Buffer.concat([head, chunk.subarray(0, SNIFF_BYTES - head.length)]);
-        done(null, chunk);
-      },
+    await pipeline(
+      Readable.fromWeb(request.body as ReadableStream<Uint8Array>),
+      counted,
+      createWriteStream(file, { mode: 0o600 }),
+    );
+  } catch (error) {
+    await remove();
+    if (error instanceof AppError || !brokeOff(error)) throw error;
+    throw new AppError('invalid', {
+      message: 'The upload broke off. Send the file again; what arrived twice is kept once.',
+      fields: [{ field: 'body', message: 'The upload broke off.' }],
     });
-    try {
-      await pipeline(
-        Readable.fromWeb(request.body as ReadableStream<Uint8Array>),
-        counted,
-        createWriteStream(file, { mode: 0o600 }),
-      );
-    } catch (error) {
-      if (error instanceof AppError || !brokeOff(error)) throw error;
-      throw new AppError('invalid', {
-        message: 'The upload broke off. Send the file again; what arrived twice is kept once.',
-        fields: [{ field: 'body', message: 'The upload broke off.' }],
-      });
-    }
-    return await use({ path: file, bytes, head });
+  }
+  return { path: file, bytes, head, remove };
+}
+
+/** As `spool`, for work that is done when `use` is: the file is taken away then. */
+export async function spooled<T>(
+  request: Request,
+  limit: number,
+  use: (file: Spooled) => Promise<T>,
+): Promise<T> {
+  const file = await spool(request, limit);
+  try {
+    return await use(file);
   } finally {
-    await rm(folder, { recursive: true, force: true });
+    await file.remove();
   }
 }
 
