@@ -1,5 +1,6 @@
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { identifierAttacks } from './identifiers';
+import { plantedAttacks } from './planted';
 import { requestAttacks } from './requests';
 import { makeScene, type Scene } from './scene';
 import { sharedLinkAttacks } from './shared-links';
@@ -17,6 +18,8 @@ describe('signing in', () => signingInAttacks(scene));
 describe('shared pages', () => sharedLinkAttacks(scene));
 describe('requests', () => requestAttacks(scene));
 describe('identifiers', () => identifierAttacks(scene));
+
+describe('what was planted', () => plantedAttacks(scene));
 
 describe('the log of all this, at its most talkative', () => {
   it('names no password, token, code, key or session', () => {

@@ -131,7 +131,13 @@ export async function writeOneOfEach(owner: pg.Pool, siteId: number): Promise<vo
     created_by: person,
   });
   await add('tariff', { site_id: site, from_on: day, price_kwh: 0.2, created_by: person });
-  const file2 = { site_id: site, number: 1, organisation_id: organisation, title: 'Loose lead', what: 'A1' };
+  const file2 = {
+    site_id: site,
+    number: 900 + site,
+    organisation_id: organisation,
+    title: 'Loose lead',
+    what: 'A1',
+  };
   const caseId = await add('case_file', { ...file2, origin: 'hand' });
   await add('case_entry', { case_id: caseId, site_id: site, kind: 'note', body: 'Bring spares' });
   await add('notice', {
