@@ -9,6 +9,7 @@ import {
   type ChecklistMark,
   type ReportedCase,
 } from '../../schemas/api/cases';
+import type { EventItem } from '../../schemas/api/now';
 import type { Tx } from '../db/transaction';
 import { SITE_VISIBLE } from './visible-site';
 
@@ -199,4 +200,24 @@ export async function reportedBy(tx: Tx, siteId: number, personId: number): Prom
     { siteId, personId },
   );
   return rows.map((r) => ({ ...r, at: r.at.toISOString(), closedAt: r.closedAt?.toISOString() ?? null }));
+}
+
+/** Events of the strings of a case and those of the whole site, newest first; what another supersedes is left out. */
+export async function eventsOfCase(
+  tx: Tx,
+  wanted: { siteId: number; strings: readonly string[]; from: Date; to: Date; limit: number },
+): Promise<EventItem[]> {
+  const { rows } = await tx.raw<{
+    rows: (Omit<EventItem, 'at' | 'recordedAt'> & { at: Date; recordedAt: Date })[];
+  }>(
+    `select e.id::text as id, e.at, e.recorded_at as "recordedAt", site.ref as "siteId", site.name as "siteName",
+            s.ref as "stringId", s.name as "stringName", e.kind, e.detail
+     from event e join site on site.id = e.site_id left join string s on s.id = e.string_id
+     where e.site_id = :siteId and ${SITE_VISIBLE} and e.at >= :from and e.at <= :to
+       and (e.string_id is null or s.ref = any (cast(:strings as uuid[])) or cardinality(cast(:strings as uuid[])) = 0)
+       and not exists (select from event newer where newer.supersedes = e.id)
+     order by e.at desc, e.id desc limit :limit`,
+    { ...wanted, strings: [...wanted.strings] },
+  );
+  return rows.map((r) => ({ ...r, at: r.at.toISOString(), recordedAt: r.recordedAt.toISOString() }));
 }
