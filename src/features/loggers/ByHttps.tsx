@@ -1,11 +1,16 @@
+import { useSyncExternalStore } from 'react';
 import { BATCH_MAX_BYTES, BATCH_MESSAGES_MAX } from '../../schemas/ingest';
 import { paths } from '../../schemas/paths';
 
 const MB = 1024 * 1024;
 
+const never = () => () => undefined;
+const here = (): string => window.location.origin;
+const elsewhere = (): string => '';
+
 /** The two calls of a logger that reports in batches. */
 export function ByHttps({ serial }: { serial: string }) {
-  const origin = typeof window === 'undefined' ? '' : window.location.origin;
+  const origin = useSyncExternalStore(never, here, elsewhere);
   const box =
     'my-2 block overflow-x-auto whitespace-pre rounded border border-rule bg-film px-3 py-3 text-sm';
   return (
