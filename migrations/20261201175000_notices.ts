@@ -163,6 +163,7 @@ export async function down(knex: Knex): Promise<void> {
     drop table letter_picture;
     do $$ begin
       if (select roles_made from installation) then
+        revoke update on notice from wakeline_ingest;
         drop policy notice_app on notice;
         create policy notice_app on notice to wakeline_app
           using (organisation_id = (select actor_organisation()))

@@ -2,13 +2,14 @@ import { z } from 'zod';
 import { causeNow, eventItem, gatewayNow, inverterNow, siteNow, stringNow } from './api/now';
 
 /**
- * /live, browser side. One socket carries several topics: `fleet`, `site:ID`, `string:ID`, `roll-call:ID`.
+ * /live, browser side. One socket carries several topics: `fleet`, `notices` (one's own), `site:ID`, `string:ID`,
+ * `roll-call:ID`.
  * Each subscription gets a snapshot with a cursor, then deltas, each with the cursor to come back with.
  */
 export const CLOSE_COME_BACK = 4001; // too slow to keep up: reconnect with the cursor
 export const CLOSE_SIGNED_OUT = 4003;
 
-export const topic = z.string().regex(/^(fleet|(site|string|roll-call):[0-9a-f-]{36})$/);
+export const topic = z.string().regex(/^(fleet|notices|(site|string|roll-call):[0-9a-f-]{36})$/);
 
 export const clientMessage = z.discriminatedUnion('type', [
   z.strictObject({ type: z.literal('subscribe'), topic, cursor: z.string().max(80).optional() }),
@@ -26,6 +27,22 @@ export const heardItem = z.object({
 });
 export type HeardItem = z.infer<typeof heardItem>;
 
+/** One's own notices, as the shell of every page shows them. */
+export const noticesNow = z.object({
+  unread: z.int(), // at most a hundred
+  hazards: z.int(), // unread and not over
+  newest: z
+    .object({
+      id: z.uuid(),
+      headline: z.string(),
+      href: z.string(),
+      hazard: z.boolean(),
+      siteName: z.string().nullable(),
+    })
+    .nullable(), // of those unread
+});
+export type NoticesNow = z.infer<typeof noticesNow>;
+
 /** What changed; a part that is absent did not. Arrays replace by `id` (or name, number, key), they are not whole lists. */
 export const change = z.object({
   sites: z.array(siteNow).optional(), // fleet
@@ -37,6 +54,7 @@ export const change = z.object({
   events: z.array(eventItem).optional(), // newest last
   heard: z.array(heardItem).optional(), // roll-call, newest last
   rollCallStopped: z.boolean().optional(),
+  notices: noticesNow.optional(), // notices
 });
 export type Change = z.infer<typeof change>;
 

@@ -31,6 +31,8 @@ export async function ask(
     organisationName: 'Lowfield Solar Works',
     timeZone: 'Europe/London',
     theme: 'system' as const,
+    unread: 0,
+    hazards: 0,
   };
   const context = {
     locals: { requestId: 'test', actor, viewer, sessionId: null },

@@ -5,6 +5,10 @@ export interface ShellActor {
   name: string;
   initials: string;
   role: Role;
+  /** Notices not read yet, at most a hundred. */
+  unread: number;
+  /** Not shutting down, unread and not over. */
+  hazards: number;
 }
 export type Theme = 'system' | 'light' | 'dark';
 export type StaffNav =

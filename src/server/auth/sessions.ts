@@ -103,6 +103,8 @@ export async function signedInBy(cookieHeader: string): Promise<SignedIn | { coo
         organisationName: person.organisationName,
         timeZone: person.timeZone,
         theme: person.theme as Theme,
+        unread: person.unread,
+        hazards: person.hazards,
       },
     };
   }

@@ -14,6 +14,10 @@ export interface Viewer {
   /** Of the organisation: for times that belong to no site. */
   timeZone: string;
   theme: Theme;
+  /** Notices not read yet, at most a hundred. */
+  unread: number;
+  /** Not shutting down, unread and not over. */
+  hazards: number;
 }
 
 /** First letters of the first and the last name, at most two. */

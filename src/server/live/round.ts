@@ -6,7 +6,8 @@ import { gatewaysNow, invertersNow, stringsNow } from '../queries/now';
 import { answersOf } from '../queries/roll-call';
 import { sitesNow } from '../queries/sites-now';
 import { causesNow } from '../services/causes';
-import { eventItemsOf, serialsHeard, type Subject } from './topics';
+import { noticesNow } from '../queries/notices';
+import { eventItemsOf, isOfSite, serialsHeard, type Subject } from './topics';
 
 /**
  * What changed, read once and shared by everybody who listens to it. In two kinds of round: news (strings, events,
@@ -30,7 +31,7 @@ export interface Delta<L extends Listening> {
 const EVENTS_A_ROUND = 2000;
 
 const isBelow = (a: string, b: string): boolean => BigInt(a) < BigInt(b);
-const atSite = (l: Listening): number | null => (l.subject.kind === 'fleet' ? null : l.subject.siteId);
+const atSite = (l: Listening): number | null => (isOfSite(l.subject) ? l.subject.siteId : null);
 
 /**
  * Strings, events and units heard. Every listener gets a delta, an empty one where nothing concerns it. `held`: some
@@ -64,12 +65,12 @@ export function watchedStrings(
   const single = new Set<number>();
   for (const { subject } of listening)
     if (subject.kind === 'string') single.add(subject.stringId);
-    else if (subject.kind !== 'fleet') whole.add(subject.siteId);
+    else if (isOfSite(subject)) whole.add(subject.siteId);
   return new Map([...strings].filter(([id, siteId]) => whole.has(siteId) || single.has(id)));
 }
 
 const concerns = (event: LiveEvent, subject: Subject): boolean =>
-  subject.kind !== 'fleet' &&
+  isOfSite(subject) &&
   event.siteNumber === subject.siteId &&
   (subject.kind !== 'string' || event.stringNumber === subject.stringId);
 
@@ -101,7 +102,7 @@ async function newsFor(
   changed: ReadonlyMap<number, Change['strings']>,
 ): Promise<Change> {
   const change: Change = {};
-  if (subject.kind === 'fleet') return change;
+  if (!isOfSite(subject)) return change;
   const here = changed.get(subject.siteId);
   const strings = subject.kind === 'string' ? here?.filter((s) => s.id === subject.ref) : here;
   if (strings && strings.length > 0) change.strings = strings;
@@ -114,6 +115,25 @@ async function newsFor(
   if (events.some((e) => e.kind === 'roll_call_stopped' || e.kind === 'roll_call_started'))
     change.rollCallStopped = !(await rollCallOpen(tx, subject.siteId));
   return change;
+}
+
+/** The notices of these persons, for whoever of them listens. */
+export async function readNotices<L extends Listening>(
+  listening: readonly L[],
+  persons: ReadonlySet<number> | 'everybody',
+): Promise<Delta<L>[]> {
+  const mine = listening.flatMap((to) =>
+    to.subject.kind === 'notices' && (persons === 'everybody' || persons.has(to.subject.personId))
+      ? [{ to, personId: to.subject.personId }]
+      : [],
+  );
+  if (mine.length === 0) return [];
+  return asIngest(async (tx) => {
+    const found = new Map<number, Change>();
+    for (const { personId } of mine)
+      if (!found.has(personId)) found.set(personId, { notices: await noticesNow(tx, personId) });
+    return mine.map(({ to, personId }) => ({ to, cursor: to.cursor, change: found.get(personId) ?? {} }));
+  });
 }
 
 type SiteParts = Pick<Change, 'site' | 'inverters' | 'gateways' | 'causes'>;
@@ -190,6 +210,7 @@ function overviewFor(
       );
     return change;
   }
+  if (!isOfSite(subject)) return change;
   const of = parts.get(subject.siteId);
   if (!of || subject.kind === 'roll-call') return change;
   if (of.inverters) change.inverters = of.inverters;

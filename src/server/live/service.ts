@@ -6,11 +6,12 @@ import { isDatabaseAway } from '../errors';
 import { asIngest } from '../db/transaction';
 import { log } from '../log';
 import { siteByString } from '../queries/live';
-import { CHANNELS, readChanged } from '../queries/live-notices';
+import { CHANNELS, readChanged, readNoticed } from '../queries/live-notices';
 import { Connection, type Subscription } from './connection';
 import { Listener } from './listener';
 import { Repeated } from './repeated';
-import { readNews, readOverviews, watchedStrings, type Delta } from './round';
+import { readNews, readNotices, readOverviews, watchedStrings, type Delta } from './round';
+import { isOfSite } from './topics';
 
 /** After a wake-up so long is waited for more to come with it. */
 const GATHER_MS = 10;
@@ -26,12 +27,15 @@ const SESSIONS_EVERY_MS = 60_000;
 export class LiveHub {
   readonly wss = new WebSocketServer({ noServer: true, maxPayload: 64 * 1024, perMessageDeflate: false });
   private readonly connections = new Set<Connection>();
-  private readonly joining = new Set<{ sites: Set<number>; strings: Set<number> }>();
+  private readonly joining = new Set<{ sites: Set<number>; strings: Set<number>; persons: Set<number> }>();
   private sites = new Set<number>();
   private strings = new Set<number>();
   private eventSites = new Set<number>();
   private readonly heldSites = new Set<number>();
   private heldTimer: NodeJS.Timeout | undefined;
+  private persons = new Set<number>();
+  private everybody = false;
+  private readonly notices = new Repeated(GATHER_MS, GATHER_MS, () => this.sendNotices());
   private readonly siteByString = new Map<number, number>();
   private readonly news = new Repeated(GATHER_MS, GATHER_MS, () => this.sendNews());
   private readonly overviews = new Repeated(GATHER_MS, OVERVIEW_EVERY_MS, () => this.sendOverviews());
@@ -40,10 +44,12 @@ export class LiveHub {
   private everything = false;
   private stopping = false;
   private readonly listener = new Listener(
-    [CHANNELS.changed, CHANNELS.rollCall, CHANNELS.asBuilt],
+    [CHANNELS.changed, CHANNELS.rollCall, CHANNELS.asBuilt, CHANNELS.noticed],
     (channel, payload) => this.notice(channel, payload),
     () => {
       this.everything = true;
+      this.everybody = true;
+      this.notices.soon();
       this.wake();
     },
   );
@@ -53,6 +59,8 @@ export class LiveHub {
     this.beat = setInterval(() => {
       this.ping();
       this.everything = true;
+      this.everybody = true;
+      this.notices.soon();
       this.wake();
     }, HEARTBEAT_MS);
     this.sessionTimer = setInterval(() => void this.checkSessions(), SESSIONS_EVERY_MS);
@@ -65,7 +73,7 @@ export class LiveHub {
     clearTimeout(this.heldTimer);
     for (const { ws } of this.connections) ws.close(1001, 'the server is going away');
     await this.listener.stop();
-    await Promise.all([this.news.stop(), this.overviews.stop()]);
+    await Promise.all([this.news.stop(), this.overviews.stop(), this.notices.stop()]);
     for (const { ws } of this.connections) ws.terminate();
   }
 
@@ -81,10 +89,12 @@ export class LiveHub {
   }
 
   private join(): () => void {
-    const missed = { sites: new Set<number>(), strings: new Set<number>() };
+    const missed = { sites: new Set<number>(), strings: new Set<number>(), persons: new Set<number>() };
     this.joining.add(missed);
     return () => {
       this.joining.delete(missed);
+      for (const id of missed.persons) this.persons.add(id);
+      if (missed.persons.size > 0) this.notices.soon();
       if (missed.sites.size + missed.strings.size === 0) return;
       for (const id of missed.sites) this.sites.add(id);
       for (const id of missed.strings) this.strings.add(id);
@@ -99,6 +109,11 @@ export class LiveHub {
 
   private notice(channel: string, payload: string): void {
     if (this.connections.size === 0) return;
+    if (channel === CHANNELS.noticed) {
+      for (const id of readNoticed(payload)) this.persons.add(id);
+      this.notices.soon();
+      return;
+    }
     const changed =
       channel === CHANNELS.changed ? readChanged(payload) : { sites: [Number(payload)], strings: [] };
     for (const id of changed?.sites ?? []) {
@@ -131,7 +146,7 @@ export class LiveHub {
     if (listening.length === 0) return;
     try {
       const watched = watchedStrings(listening, await this.sitesOf(strings));
-      const events = listening.some((l) => l.subject.kind !== 'fleet' && eventSites.has(l.subject.siteId));
+      const events = listening.some((l) => isOfSite(l.subject) && eventSites.has(l.subject.siteId));
       if (!everything && !events && watched.size === 0) return;
       const { deltas, held } = await readNews(listening, watched);
       this.send(deltas, everything);
@@ -180,6 +195,20 @@ export class LiveHub {
       this.send(await readOverviews(listening, sites), false);
     } catch (error) {
       for (const id of sites) this.sites.add(id);
+      throw error;
+    }
+  }
+
+  private async sendNotices(): Promise<void> {
+    const { persons, everybody } = this;
+    this.persons = new Set();
+    this.everybody = false;
+    for (const missed of this.joining) for (const id of persons) missed.persons.add(id);
+    try {
+      this.send(await readNotices(this.listening(), everybody ? 'everybody' : persons), false);
+    } catch (error) {
+      for (const id of persons) this.persons.add(id);
+      this.everybody ||= everybody;
       throw error;
     }
   }

@@ -10,6 +10,7 @@ import {
   visibleStringNumbers,
   type LiveEvent,
 } from '../queries/live';
+import { noticesNow } from '../queries/notices';
 import { gatewaysNow, invertersNow, stringsNow } from '../queries/now';
 import { answersOf } from '../queries/roll-call';
 import { sitesNow } from '../queries/sites-now';
@@ -18,12 +19,18 @@ import { causesNow } from '../services/causes';
 
 /** What a topic is about, in the database's numbers, once the actor was found to be allowed to hear it. */
 export type Subject =
+  | { kind: 'notices'; personId: number }
   | { kind: 'fleet'; siteIds: ReadonlySet<number>; refs: ReadonlySet<string> }
   | { kind: 'site'; siteId: number }
   | { kind: 'string'; siteId: number; stringId: number; ref: string }
   | { kind: 'roll-call'; siteId: number };
 
+/** Whether a subject is one site, or a part of one. */
+export const isOfSite = (subject: Subject): subject is Exclude<Subject, { kind: 'fleet' | 'notices' }> =>
+  subject.kind !== 'fleet' && subject.kind !== 'notices';
+
 const PERMISSION: Record<Subject['kind'], Permission> = {
+  notices: 'notice.read',
   fleet: 'fleet.read',
   site: 'site.read',
   string: 'string.read',
@@ -40,6 +47,7 @@ export const NOT_THERE = 'There is nothing of that name, or it is not open to yo
 export async function subjectOf(topic: string, actor: Actor): Promise<Subject | { refused: string }> {
   const [kind, ref = ''] = topic.split(':') as [Subject['kind'], string | undefined];
   if (!mayUse(actor.role, PERMISSION[kind])) return { refused: NOT_FOR_YOU };
+  if (kind === 'notices') return { kind, personId: actor.personId };
   return asActor(actor, async (tx) => {
     if (kind === 'fleet') {
       const sites = await visibleSites(tx);
@@ -76,6 +84,7 @@ export const serialsHeard = (events: readonly LiveEvent[]): string[] =>
   );
 
 async function stateOf(tx: Tx, subject: Subject, at: Date): Promise<Change> {
+  if (subject.kind === 'notices') return { notices: await noticesNow(tx, subject.personId) };
   if (subject.kind === 'fleet') {
     const ids = [...subject.siteIds];
     return { sites: await sitesNow(tx, at, ids), causes: await causesNow(tx, at, ids) };
@@ -110,6 +119,8 @@ export async function snapshotOf(
   return asIngest(async (tx) => {
     const { below: cursor } = await horizon(tx);
     const change = await stateOf(tx, subject, new Date());
+    // what is unread now is all there is to know of what was missed
+    if (subject.kind === 'notices') return { kind: 'snapshot', cursor, change };
     const stringId = subject.kind === 'string' ? subject.stringId : undefined;
     const siteIds = subject.kind === 'fleet' ? [...subject.siteIds] : [subject.siteId];
     const missed =

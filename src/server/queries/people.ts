@@ -11,6 +11,9 @@ export interface PersonRow {
   role: string;
   theme: string;
   sites: number[];
+  /** Notices not read yet, at most a hundred, and hazards among them that are not over. */
+  unread: number;
+  hazards: number;
 }
 
 /**
@@ -24,8 +27,12 @@ export async function personOfSession(personId: number, sessionHash: string): Pr
          update session set used_at = now() where id = ? and used_at < now() - interval '5 minutes' returning user_id),
        here as (update person set last_seen_at = now() where id in (select user_id from used))
        select p.id, p.ref, p.organisation_id as "organisationId", o.name as "organisationName", o.time_zone as "timeZone", p.email, p.name, p.role, p.theme,
-              coalesce((select array_agg(site_id) from site_access a where a.person_id = p.id), '{}') as sites
+              coalesce((select array_agg(site_id) from site_access a where a.person_id = p.id), '{}') as sites,
+              n.unread, n.hazards
        from person p join organisation o on o.id = p.organisation_id
+       cross join lateral (
+         select count(*)::int as unread, (count(*) filter (where hazard and over_at is null))::int as hazards
+         from (select hazard, over_at from notice where person_id = p.id and read_at is null limit 100) newest) n
        where p.id = ? and p.active`,
       [sessionHash, personId],
     );
