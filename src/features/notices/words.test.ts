@@ -6,7 +6,9 @@ import { clockOfMinute, minuteOfClock, noticesFinding } from './words';
 describe('a time of day', () => {
   it('is read as it is written', () => {
     fc.assert(
-      fc.property(fc.integer({ min: 0, max: 1439 }), (m) => expect(minuteOfClock(clockOfMinute(m))).toBe(m)),
+      fc.property(fc.integer({ min: 0, max: 1439 }), (m) => {
+        expect(minuteOfClock(clockOfMinute(m))).toBe(m);
+      }),
     );
   });
   it.each(['', '24:00', '7', '07:60', 'noon', '-1:00'])('%j is none', (typed) => {

@@ -116,15 +116,18 @@ export async function noteAttempt(tx: Tx, call: DueCall, outcome: CallOutcome): 
   return rows[0]?.since ?? null;
 }
 
-/** Switches a webhook off. @returns what it was called, once */
+/** Switches a webhook off and gives up what still waits for it. @returns what it was called, once */
 export async function disableWebhook(
   tx: Tx,
   id: number,
   at: Date,
 ): Promise<{ ref: string; name: string; url: string } | undefined> {
   const { rows } = await tx.raw<{ rows: { ref: string; name: string; url: string }[] }>(
-    `update webhook set active = false, disabled_at = ? where id = ? and active returning ref, name, url`,
-    [at, id],
+    `with waiting as (
+       update webhook_delivery set given_up_at = :at
+       where webhook_id = :id and delivered_at is null and given_up_at is null)
+     update webhook set active = false, disabled_at = :at where id = :id and active returning ref, name, url`,
+    { at, id },
   );
   return rows[0];
 }

@@ -1,0 +1,18 @@
+import { Notice } from '../../components/ui/Notice';
+
+/** The secret, shown this once. */
+export function SecretNotice({ secret }: { secret: string }) {
+  return (
+    <Notice kind="done" title="Keep this secret where the receiver finds it: it is not shown again">
+      <label className="block">
+        <span className="sr-only">Secret</span>
+        <input
+          readOnly
+          value={secret}
+          onFocus={(event) => event.target.select()}
+          className="min-h-[44px] w-full rounded border border-rule bg-sheet px-3 font-mono text-[15px] text-ink"
+        />
+      </label>
+    </Notice>
+  );
+}
