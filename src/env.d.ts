@@ -11,6 +11,8 @@ declare namespace App {
     sessionId: string | null;
     /** What the page opens beyond other pages. */
     doors?: import('./server/http/headers').Doors;
+    /** Resolves when the reader has taken what was written; never put where nothing stands between. */
+    drained?: () => Promise<void>;
     problem?: { status: number; title: string; message: string };
   }
 }

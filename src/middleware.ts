@@ -5,6 +5,7 @@ import { config } from './server/config';
 import { AppError } from './server/errors';
 import { answerHeaders } from './server/http/headers';
 import { sameOrigin } from './server/http/origin';
+import { asReader } from './server/http/reader';
 import { problem } from './server/http/problem';
 
 const SAFE = new Set(['GET', 'HEAD', 'OPTIONS']);
@@ -46,6 +47,9 @@ export const onRequest = defineMiddleware(async (context, next) => {
       locals,
     );
 
+  // programs come with a token of their own: no cookie of a browser lets anybody in there
+  if (context.url.pathname.startsWith('/api/v1/')) return finish(await next(), locals);
+
   let cookies: string[] = [];
   try {
     const found = await signedInBy(request.headers.get('cookie') ?? '');
@@ -61,7 +65,7 @@ export const onRequest = defineMiddleware(async (context, next) => {
     };
     return finish(await context.rewrite('/problem'), locals);
   }
-  const response = finish(await next(), locals);
+  const response = finish(await asReader(locals.viewer?.units ?? 'metric', next), locals);
   // what the answer says of a cookie itself, a new session above all, is the last word
   const said = new Set(response.headers.getSetCookie().map(cookieName));
   for (const cookie of cookies)

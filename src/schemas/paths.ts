@@ -93,6 +93,11 @@ export const paths = {
     site: (site: string) => `/api/sites/${site}`,
     siteEvents: (site: string) => `/api/sites/${site}/events`,
     acknowledge: (site: string) => `/api/sites/${site}/acknowledge`,
+    causesCsv: () => '/api/causes.csv',
+    plannedWorks: (site: string) => `/api/sites/${site}/planned-works`,
+    plannedWorksCsv: (site: string) => `/api/sites/${site}/planned-works.csv`,
+    plannedWorkEnd: (work: string) => `/api/planned-works/${work}/end`,
+    jobsRetry: () => '/api/jobs/retry',
     siteTraces: (site: string) => `/api/sites/${site}/traces`,
     string: (string: string) => `/api/strings/${string}`,
     stringHistory: (string: string) => `/api/strings/${string}/history`,
@@ -183,6 +188,10 @@ export const paths = {
     auditCsv: () => '/api/audit.csv',
     /** A paper of a site: handover pack, test report. */
     paper: (paper: string) => `/api/papers/${paper}`,
+    settingsOrganisation: () => '/api/settings/organisation',
+    settingsThresholds: () => '/api/settings/thresholds',
+    /** `version` only so that a browser asks again when it changed. */
+    logo: (version?: string) => (version ? `/api/settings/logo?v=${version}` : '/api/settings/logo'),
     figuresCsv: () => '/api/figures.csv',
     siteFiguresCsv: (site: string) => `/api/sites/${site}/figures.csv`,
     siteReport: (site: string) => `/api/sites/${site}/month-report.pdf`,

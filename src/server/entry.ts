@@ -13,12 +13,18 @@ import sirv from 'sirv';
 import { paths } from '../schemas/paths';
 import { config } from './config';
 import { ERROR_KINDS } from './errors';
+import { drainedOf } from './http/drained';
 import { answerHeaders, commonHeaders } from './http/headers';
 import { log } from './log';
 import { refuseUpgrade, routeUpgrade, startRoles, stopRoles } from './roles';
 import { certificateFiles, secureServer } from './tls';
 
-type Handler = (req: IncomingMessage, res: ServerResponse) => Promise<void>;
+type Handler = (
+  req: IncomingMessage,
+  res: ServerResponse,
+  next?: undefined,
+  locals?: { drained: () => Promise<void> },
+) => Promise<void>;
 
 export interface StartOptions {
   /** The folder `dist/client`. The one baked into the build would be wrong after the build was moved. */
@@ -119,7 +125,7 @@ async function startServer(handler: Handler, options: StartOptions): Promise<Run
     if (refuseEarly(req, res)) return;
     const forLoggers = takesReadings && req.url?.startsWith(paths.api.v1Ingest());
     if (!isWeb && !forLoggers) return answer(req, res, 404, 'This process serves no pages.');
-    assets(req, res, () => void handler(req, res)); // without `next`: unknown paths get the 404 page
+    assets(req, res, () => void handler(req, res, undefined, { drained: drainedOf(res) })); // without `next`: unknown paths get the 404 page
   };
   const files = certificateFiles(settings);
   const secure = files && secureServer(files, listener);

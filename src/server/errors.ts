@@ -5,6 +5,7 @@ export const ERROR_KINDS = {
   unauthenticated: { status: 401, close: 4401, title: 'Sign in first' },
   forbidden: { status: 403, close: 4403, title: 'Your role does not include this' },
   not_found: { status: 404, close: 4404, title: 'Nothing is here' },
+  not_allowed: { status: 405, close: 4405, title: 'This address does not take that' },
   conflict: { status: 409, close: 4409, title: 'This clashes with what is there' },
   too_large: { status: 413, close: 1009, title: 'Too large' },
   too_many: { status: 429, close: 4429, title: 'Too many tries' },

@@ -5,14 +5,16 @@ import { api } from '../../lib/api';
 import { queryClient } from '../../lib/query-client';
 import { paths } from '../../schemas/paths';
 import type { AccountPage } from '../../schemas/api/my-account';
+import type { TokensPage } from '../../schemas/api/tokens';
 import { EmailForm, PasswordForm } from './CredentialForms';
 import { SecondFactor } from './SecondFactor';
 import { Sessions } from './Sessions';
+import { Tokens } from './Tokens';
 
 const KEY = ['account'];
 
 /** One's own account: password, address, second factor, where one is signed in. */
-export function Account({ initial }: { initial: AccountPage }) {
+export function Account({ initial, tokens }: { initial: AccountPage; tokens: TokensPage | null }) {
   const client = queryClient();
   const { data: page } = useQuery(
     {
@@ -38,6 +40,7 @@ export function Account({ initial }: { initial: AccountPage }) {
         <div className="grid content-start gap-5">
           <Sessions page={page} onChanged={again} />
           <SecondFactor page={page} onChanged={again} />
+          {tokens && <Tokens initial={tokens} timeZone={page.person.timeZone} />}
         </div>
         <div className="grid content-start gap-5">
           <Sheet id="password" title="Password">

@@ -13,9 +13,16 @@ export const AREA_WORDS: Record<(typeof AUDIT_AREAS)[number], string> = {
   handover: 'handover',
   hazard: 'hazards',
   history: 'earlier readings',
+  settings: 'settings',
+  tariff: 'prices',
 };
 
 const ACTIONS: Record<string, string> = {
+  'settings.organisation': 'changed the organisation’s settings',
+  'settings.thresholds': 'changed thresholds',
+  'settings.logo': 'changed the logo',
+  'tariff.set': 'set a price a kWh',
+  'tariff.removed': 'took a price a kWh away',
   'people.invited': 'invited somebody',
   'people.invitation_ended': 'ended an invitation',
   'people.joined': 'accepted an invitation',
@@ -27,6 +34,10 @@ const ACTIONS: Record<string, string> = {
   'account.email_asked': 'asked for a new address',
   'account.email_changed': 'changed their address',
   'account.sessions_ended': 'signed other devices out',
+  'account.token_made': 'made a token',
+  'account.token_ended': 'ended a token of theirs',
+  'account.token_wrote': 'wrote by a token',
+  'people.tokens_ended': 'ended the tokens of a person',
   'account.second_factor_begun': 'put a second factor in force',
   'account.second_factor_ended': 'ended their second factor',
   'share.made': 'made a shared page',

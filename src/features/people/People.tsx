@@ -115,6 +115,28 @@ export function People({ initial, view: initialView, timeZone }: Props) {
       cell: (p) => (p.secondFactor ? 'yes' : 'no'),
     },
     {
+      key: 'tokens',
+      label: 'Tokens',
+      from: 'md',
+      cell: (p) =>
+        p.tokens === 0 ? (
+          'none'
+        ) : (
+          <>
+            {p.tokens}
+            <span className="block text-sm text-ink-2">
+              {p.tokensUsedAt ? (
+                <>
+                  used <RelativeTime at={p.tokensUsedAt} now={page.at} timeZone={timeZone} />
+                </>
+              ) : (
+                'not used yet'
+              )}
+            </span>
+          </>
+        ),
+    },
+    {
       key: 'seen',
       label: 'Last seen',
       sortable: true,
@@ -265,23 +287,36 @@ export function People({ initial, view: initialView, timeZone }: Props) {
         onClose={() => setOpen(null)}
       >
         {open?.kind === 'change' && (
-          <PersonForm
-            draft={open.person}
-            sites={page.sites}
-            fixedEmail
-            fixedRole={open.person.self}
-            fault={send.error}
-            busy={send.isPending}
-            submit="Save"
-            onSubmit={({ name, role, sites }) =>
-              send.mutate({
-                path: paths.api.person(open.person.id),
-                method: 'PATCH',
-                body: { name, role, ...(role === 'customer' ? { sites } : {}) },
-                said: `${name} was changed.${role === open.person.role ? '' : ' The new role holds from the next sign-in.'}`,
-              })
-            }
-          />
+          <>
+            <PersonForm
+              draft={open.person}
+              sites={page.sites}
+              fixedEmail
+              fixedRole={open.person.self}
+              fault={send.error}
+              busy={send.isPending}
+              submit="Save"
+              onSubmit={({ name, role, sites }) =>
+                send.mutate({
+                  path: paths.api.person(open.person.id),
+                  method: 'PATCH',
+                  body: { name, role, ...(role === 'customer' ? { sites } : {}) },
+                  said: `${name} was changed.${role === open.person.role ? '' : ' The new role holds from the next sign-in.'}`,
+                })
+              }
+            />
+            <Tokens
+              person={open.person}
+              busy={send.isPending}
+              onEnd={() =>
+                send.mutate({
+                  path: paths.api.personTokens(open.person.id),
+                  method: 'DELETE',
+                  said: `The tokens of ${open.person.name} have ended.`,
+                })
+              }
+            />
+          </>
         )}
       </Dialog>
       <Dialog
@@ -321,6 +356,22 @@ export function People({ initial, view: initialView, timeZone }: Props) {
         )}
       </Dialog>
     </>
+  );
+}
+
+/** Programs that act for somebody: a manager sees that there are some, and ends them. */
+function Tokens({ person, busy, onEnd }: { person: PersonItem; busy: boolean; onEnd: () => void }) {
+  if (person.tokens === 0) return null;
+  return (
+    <div className="mt-5 border-t border-rule pt-4">
+      <p>
+        {counted(person.tokens, 'token')} in force, by which programs act for {person.name}. Ended ones let
+        nobody in from that moment.
+      </p>
+      <Button className="mt-3" disabled={busy} onClick={onEnd}>
+        {person.tokens === 1 ? 'End the token' : `End all ${person.tokens} tokens`}
+      </Button>
+    </div>
   );
 }
 

@@ -14,6 +14,8 @@ const person = (name: string, more: Partial<PersonItem> = {}): PersonItem => ({
   secondFactor: false,
   sites: [],
   self: false,
+  tokens: 0,
+  tokensUsedAt: null,
   ...more,
 });
 const names = (people: PersonItem[], view: Partial<typeof PEOPLE_DEFAULTS>) =>

@@ -30,6 +30,9 @@ export const personItem = z.object({
   secondFactor: z.boolean(),
   sites: z.array(id), // what a customer sees; staff see all
   self: z.boolean(),
+  /** Tokens in force, and when the last of them was used. */
+  tokens: z.int(),
+  tokensUsedAt: time.nullable(),
 });
 export type PersonItem = z.infer<typeof personItem>;
 

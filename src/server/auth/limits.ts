@@ -96,3 +96,34 @@ export const takeCodeTry = (personId: number): Promise<void> =>
 export async function forgiveCodes(personId: number): Promise<void> {
   await letterLimits().code.delete(String(personId));
 }
+
+let wrongTokens: RateLimiterPostgres | undefined;
+/** Tokens that nobody knows: 30 from one address in 15 minutes. Whoever has a good one is not counted. */
+const wrongTokenLimit = (): RateLimiterPostgres => (wrongTokens ??= limiter('wrong_token', 30, 900));
+
+/** Counts a token that nobody knows; throws `too_many` with the wait. */
+export const takeWrongToken = (address: string): Promise<void> =>
+  take(wrongTokenLimit(), address, 'use a token');
+
+/** Requests of one token in a minute. */
+export const API_LIMIT = { requests: 600, windowS: 60 } as const;
+let requests: RateLimiterPostgres | undefined;
+
+/** Counts a request of a token; says what is left and for how long. */
+export async function takeApiRequest(
+  tokenId: number,
+): Promise<{ allowed: boolean; left: number; resetS: number }> {
+  requests ??= limiter('api', API_LIMIT.requests, API_LIMIT.windowS);
+  const said = await requests.consume(String(tokenId)).then(
+    (counted) => ({ allowed: true, counted }),
+    (blocked: unknown) => {
+      if (!(blocked instanceof RateLimiterRes)) throw blocked;
+      return { allowed: false, counted: blocked };
+    },
+  );
+  return {
+    allowed: said.allowed,
+    left: Math.max(0, said.counted.remainingPoints),
+    resetS: Math.max(1, Math.ceil(said.counted.msBeforeNext / 1000)),
+  };
+}

@@ -6,3 +6,7 @@ export const tokenHash = (token: string): Buffer => createHash('sha256').update(
 
 /** As a path may carry it; anything else is no token of ours. */
 export const TOKEN_PATTERN = /^[A-Za-z0-9_-]{43}$/;
+
+/** A token for a program: its beginning says what it is, so that one that leaked is recognised. */
+export const newApiToken = (): string => `wlk_${newToken()}`;
+export const API_TOKEN_PATTERN = /^wlk_[A-Za-z0-9_-]{43}$/;

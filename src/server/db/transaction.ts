@@ -4,18 +4,35 @@ import { database } from './pools';
 
 export type Tx = Knex.Transaction;
 
+/** From here on the transaction sees what the actor may see. */
+async function showTo(tx: Tx, actor: Pick<Actor, 'organisationId' | 'sites'>): Promise<void> {
+  await tx.raw(
+    `select set_config('wakeline.organisation', ?, true), set_config('wakeline.sites', ?, true)`,
+    [String(actor.organisationId), actor.sites === 'all' ? '*' : actor.sites.join(',')],
+  );
+}
+
 /** Runs `work` as the actor: row-level security sees the organisation and the sites for this transaction only. */
 export function asActor<T>(
   actor: Pick<Actor, 'organisationId' | 'sites'>,
   work: (tx: Tx) => Promise<T>,
 ): Promise<T> {
   return database('web').transaction(async (tx) => {
-    await tx.raw(
-      `select set_config('wakeline.organisation', ?, true), set_config('wakeline.sites', ?, true)`,
-      [String(actor.organisationId), actor.sites === 'all' ? '*' : actor.sites.join(',')],
-    );
+    await showTo(tx, actor);
     return work(tx);
   });
+}
+
+/** Opens the same transaction for whoever ends it themselves: what is read piece by piece while a stream runs. */
+export async function beginAsActor(actor: Pick<Actor, 'organisationId' | 'sites'>): Promise<Tx> {
+  const tx = await database('web').transaction();
+  try {
+    await showTo(tx, actor);
+  } catch (error) {
+    await tx.rollback();
+    throw error;
+  }
+  return tx;
 }
 
 /** In a sign-in transaction: from here on it writes for this organisation (its letters, its audit), and for no site. */

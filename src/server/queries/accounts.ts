@@ -14,6 +14,8 @@ export interface PersonAccount {
   deactivatedAt: Date | null;
   secondFactor: boolean;
   sites: string[];
+  tokens: number;
+  tokensUsedAt: Date | null;
 }
 
 /** Everybody of the actor's organisation, by name. */
@@ -21,8 +23,12 @@ export async function accountsOf(tx: Tx): Promise<PersonAccount[]> {
   const { rows } = await tx.raw<{ rows: PersonAccount[] }>(
     `select p.id, p.ref, p.name, p.email, p.role, p.active, p.last_seen_at as "lastSeenAt",
             p.deactivated_at as "deactivatedAt", p.totp_confirmed_at is not null as "secondFactor",
-            coalesce((select array_agg(s.ref) from site_access a join site s on s.id = a.site_id where a.person_id = p.id), '{}') as sites
-     from person p where p.organisation_id = (select actor_organisation()) order by p.name, p.id`,
+            coalesce((select array_agg(s.ref) from site_access a join site s on s.id = a.site_id where a.person_id = p.id), '{}') as sites,
+            t.tokens, t.used_at as "tokensUsedAt"
+     from person p
+     cross join lateral (select count(*)::int as tokens, max(last_used_at) as used_at from api_token t
+       where t.person_id = p.id and t.ended_at is null and t.expires_at > now()) t
+     where p.organisation_id = (select actor_organisation()) order by p.name, p.id`,
   );
   return rows;
 }

@@ -21,6 +21,7 @@ import {
   type InvitationRow,
   type PersonAccount,
 } from '../queries/accounts';
+import { endTokens } from '../queries/api-tokens';
 import { addMessage } from '../queries/outbox';
 import { addAuditEntry, findPersonName } from '../queries/people';
 import { siteChoices } from '../queries/site';
@@ -40,6 +41,8 @@ const personItem = (p: PersonAccount, actor: Actor): PersonItem => ({
   secondFactor: p.secondFactor,
   sites: p.sites,
   self: p.id === actor.personId,
+  tokens: p.tokens,
+  tokensUsedAt: p.tokensUsedAt?.toISOString() ?? null,
 });
 
 const stateOf = (i: InvitationRow, at: Date): InvitationItem['state'] =>
@@ -198,6 +201,8 @@ export async function changePerson(
   if (role !== 'customer') await replaceSiteAccess(tx, before.id, []);
   // what a session may do hangs on the role: a new one begins with the new role
   if (!active || role !== before.role) await endSessionsOf(tx, before.id);
+  // whoever is let in again begins without the tokens of before
+  if (!active) await endTokens(tx, before.id, { endedBy: actor.personId, at });
   const after = found(await accountOf(tx, ref), 'person');
   await addAuditEntry(tx, {
     organisationId: actor.organisationId,
