@@ -2,10 +2,10 @@ import type { Browser, BrowserContext, Page } from 'playwright-core';
 import sharp from 'sharp';
 import { afterAll, beforeAll, beforeEach, describe, expect, it } from 'vitest';
 import { axeFaults } from '../support/axe';
-import { settled, startBrowser } from '../support/browser';
+import { settled, signOnTo, startBrowser } from '../support/browser';
 import { testDatabase, type TestDatabase } from '../support/database';
 import { PASSWORD, testFleet, type TestFleet } from '../support/fleet';
-import { openCapture, phoneOf, press, signOnTo } from '../support/phone';
+import { openCapture, phoneOf, press } from '../support/phone';
 import { signInAt, startSite, type RunningSite } from '../support/server';
 
 /** On a roof, with and without a network: nothing that is recorded is lost, and everything arrives once. */

@@ -2,7 +2,7 @@ import type { Browser, BrowserContext, Page } from 'playwright-core';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import type { Role } from '../../src/domain/access/permissions';
 import type { Simulator } from '../../simulator/engine';
-import { signedInContext, startBrowser } from '../support/browser';
+import { signedInContext, signInOn, startBrowser } from '../support/browser';
 import { testDatabase, type TestDatabase } from '../support/database';
 import { testFleet, type TestFleet } from '../support/fleet';
 import { startPlant } from '../support/plant';
@@ -19,6 +19,7 @@ const PACE = 120;
 /** In the demo these never answer: one's radio is dead, two serials of the drawing are nowhere on the roof. */
 const MUTE = 3;
 const STUCK = [5, 9];
+const DESK = { viewport: { width: 1440, height: 1000 } };
 const LONG = { timeout: 90_000, interval: 500 };
 const SHORT = { timeout: 20_000, interval: 250 };
 
@@ -42,9 +43,8 @@ afterAll(async () => {
   await db.drop();
 });
 
-/** Signs in as a person does, on the page. */
 function signedIn(role: Role): Promise<BrowserContext> {
-  return signedInContext(browser, site.url, role, { viewport: { width: 1440, height: 1000 } });
+  return signedInContext(browser, site.url, role, DESK);
 }
 const plain = (text: string): string => text.replace(/\u00a0/g, ' ');
 const heading = async (page: Page): Promise<string> => plain(await page.locator('h1').innerText());
@@ -61,8 +61,9 @@ describe('the first day of a site', () => {
   let loads = 0;
 
   beforeAll(async () => {
-    technician = await signedIn('technician');
+    technician = await browser.newContext(DESK);
     roll = await technician.newPage();
+    await signInOn(roll, site.url, 'technician');
     roll.on('load', () => loads++);
   });
 

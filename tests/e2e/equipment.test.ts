@@ -2,10 +2,9 @@ import type { Browser, BrowserContext, Page } from 'playwright-core';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import type { Role } from '../../src/domain/access/permissions';
 import { axeFaults } from '../support/axe';
-import { hydrated, settled, startBrowser } from '../support/browser';
+import { hydrated, settled, signOnTo, startBrowser } from '../support/browser';
 import { testDatabase, type TestDatabase } from '../support/database';
 import { testFleet, type TestFleet } from '../support/fleet';
-import { signOnTo } from '../support/phone';
 import { startSite, type RunningSite } from '../support/server';
 
 /**

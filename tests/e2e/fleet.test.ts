@@ -1,9 +1,8 @@
 import type { Browser, Page } from 'playwright-core';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
-import { hydrated, startBrowser } from '../support/browser';
+import { hydrated, signOnTo, startBrowser } from '../support/browser';
 import { testDatabase, type TestDatabase } from '../support/database';
 import { testFleet, type TestFleet } from '../support/fleet';
-import { signOnTo } from '../support/phone';
 import { startSite, type RunningSite } from '../support/server';
 import { command, stand } from '../support/standing';
 

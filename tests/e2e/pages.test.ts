@@ -1,12 +1,12 @@
-import type { Browser, Page } from 'playwright-core';
+import type { Browser, BrowserContext, Page } from 'playwright-core';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import type { Role } from '../../src/domain/access/permissions';
 import { newToken, tokenHash } from '../../src/server/auth/secret-link';
-import { axeFaults } from '../support/axe';
-import { hydrated, settled, startBrowser } from '../support/browser';
+import { axeFaults, colourFaults } from '../support/axe';
+import { hydrated, settled, signedInContext, startBrowser } from '../support/browser';
 import { testDatabase, type TestDatabase } from '../support/database';
-import { PASSWORD, testFleet, type TestFleet } from '../support/fleet';
-import { signInAt, startSite, type RunningSite } from '../support/server';
+import { testFleet, type TestFleet } from '../support/fleet';
+import { startSite, type RunningSite } from '../support/server';
 import { writeDays } from '../support/days';
 import { command, stand } from '../support/standing';
 import { ROUTES } from '../access/routes';
@@ -65,23 +65,24 @@ afterAll(async () => {
 interface Look {
   width: number;
   scheme: 'light' | 'dark';
+  faults: (page: Page) => Promise<string[]>;
 }
+/** Each width whole in one scheme; of the other scheme what its colours decide. */
 const LOOKS: readonly Look[] = [
-  { width: 1440, scheme: 'light' },
-  { width: 1440, scheme: 'dark' },
-  { width: 390, scheme: 'light' },
-  { width: 390, scheme: 'dark' },
+  { width: 1440, scheme: 'light', faults: axeFaults },
+  { width: 1440, scheme: 'dark', faults: colourFaults },
+  { width: 390, scheme: 'dark', faults: axeFaults },
+  { width: 390, scheme: 'light', faults: colourFaults },
 ];
-const sessions = new Map<Role, string>();
+/** One window for each who looks. */
+const windows = new Map<Role | null, Promise<BrowserContext>>();
 async function pageFor(role: Role | null): Promise<Page> {
-  const context = await browser.newContext({ reducedMotion: 'reduce' });
-  if (role) {
-    const known = sessions.get(role) ?? (await signInAt(site.url, `${role}@lowfield.example`, PASSWORD));
-    sessions.set(role, known);
-    const [name = '', value = ''] = known.split('=');
-    await context.addCookies([{ name, value, url: site.url }]);
-  }
-  return context.newPage();
+  const options = { reducedMotion: 'reduce' } as const;
+  const window =
+    windows.get(role) ??
+    (role ? signedInContext(browser, site.url, role, options) : browser.newContext(options));
+  windows.set(role, window);
+  return (await window).newPage();
 }
 
 interface Shown {
@@ -348,7 +349,7 @@ async function faultsOf(page: Page, shown: Shown): Promise<string[]> {
     const wider = await page.evaluate(
       () => document.documentElement.scrollWidth - document.documentElement.clientWidth,
     );
-    const found = [...(wider > 0 ? [`${wider} px wider than the screen`] : []), ...(await axeFaults(page))];
+    const found = [...(wider > 0 ? [`${wider} px wider than the screen`] : []), ...(await look.faults(page))];
     faults.push(...found.map((f) => `${look.width} px, ${look.scheme}: ${f}`));
   }
   return faults;
@@ -360,7 +361,7 @@ describe('on a phone and a desk, in light and dark', () => {
     try {
       expect(await faultsOf(page, shown)).toEqual([]);
     } finally {
-      await page.context().close();
+      await page.close();
     }
   });
 });

@@ -2,7 +2,7 @@ import type { Browser, BrowserContext, Locator, Page } from 'playwright-core';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { startSimulator, type Simulator } from '../../simulator/engine';
 import { axeFaults } from '../support/axe';
-import { hydrated, settled, startBrowser } from '../support/browser';
+import { hydrated, settled, signedInContext, startBrowser } from '../support/browser';
 import { testDatabase, type TestDatabase } from '../support/database';
 import { PASSWORD, SECRET, testFleet, type TestFleet } from '../support/fleet';
 import { noonEverywhere } from '../support/noon';
@@ -38,13 +38,11 @@ beforeAll(async () => {
   });
   faultId = plant.inject(CLINIC, { kind: 'not_shutting_down', string: 'A3', position: 4, claims: 'passing' });
   browser = await startBrowser();
-  phone = await browser.newContext({ viewport: { width: 390, height: 844 }, hasTouch: true });
+  phone = await signedInContext(browser, site.url, 'technician', {
+    viewport: { width: 390, height: 844 },
+    hasTouch: true,
+  });
   page = await phone.newPage();
-  await page.goto(`${site.url}/sign-in`);
-  await page.getByLabel('E-mail').fill('technician@lowfield.example');
-  await page.getByLabel('Password').fill(PASSWORD);
-  await page.getByRole('button', { name: 'Sign in' }).click();
-  await page.waitForURL((url) => !url.pathname.startsWith('/sign-in'));
 });
 afterAll(async () => {
   await browser.close();
@@ -173,13 +171,8 @@ describe('a shutdown test on a phone', { timeout: 240_000 }, () => {
   });
 
   it('tells a second person who is at it', async () => {
-    const other = await browser.newContext();
+    const other = await signedInContext(browser, site.url, 'manager', {});
     const desk = await other.newPage();
-    await desk.goto(`${site.url}/sign-in`);
-    await desk.getByLabel('E-mail').fill('manager@lowfield.example');
-    await desk.getByLabel('Password').fill(PASSWORD);
-    await desk.getByRole('button', { name: 'Sign in' }).click();
-    await desk.waitForURL((url) => !url.pathname.startsWith('/sign-in'));
     await desk.goto(page.url());
     await desk.getByText('Bram Ottersley is at this test too').waitFor();
     expect(await heading(desk)).toBe('A3 did not shut down');

@@ -10,11 +10,11 @@ import { CHECKS } from '../../src/domain/commissioning/checks/list';
 import { COLUMN_LABELS } from '../../src/domain/commissioning/import/columns';
 import type { AsBuilt, PartAdd } from '../../src/schemas/api/as-built';
 import { axeFaults } from '../support/axe';
-import { hydrated, settled, startBrowser } from '../support/browser';
+import { hydrated, settled, signOnTo, startBrowser } from '../support/browser';
 import { testDatabase, type TestDatabase } from '../support/database';
 import { PASSWORD, SECRET, testFleet, type TestFleet } from '../support/fleet';
 import { pdfPages } from '../support/pdf';
-import { openCapture, phoneOf, press, signOnTo } from '../support/phone';
+import { openCapture, phoneOf, press } from '../support/phone';
 import { startSite, type RunningSite } from '../support/server';
 
 /**

@@ -1,28 +1,43 @@
 import { readFileSync } from 'node:fs';
 import { createRequire } from 'node:module';
-import type { AxeResults } from 'axe-core';
+import type { AxeResults, RunOptions } from 'axe-core';
 import type { Page } from 'playwright-core';
 import { settled } from './browser';
 
 const AXE = readFileSync(createRequire(import.meta.url).resolve('axe-core/axe.min.js'), 'utf8');
 const TAGS = ['wcag2a', 'wcag2aa', 'wcag21a', 'wcag21aa', 'wcag22aa', 'best-practice'];
 
-/** What axe finds against WCAG 2.2 AA and its best practices, one line a fault; empty: nothing. */
-export async function axeFaults(page: Page): Promise<string[]> {
-  await page.evaluate(AXE); // an element would be refused by the page's policy
-  const results = await page.evaluate(
-    (tags) =>
-      (globalThis as unknown as { axe: { run: (o: unknown) => Promise<AxeResults> } }).axe.run({
-        runOnly: { type: 'tag', values: tags },
-      }),
-    TAGS,
-  );
-  return results.violations.flatMap((v) =>
-    v.nodes.map(
-      (n) => `${v.id}: ${n.target.join(' ')} (${n.failureSummary?.split('\n')[1]?.trim() ?? v.help})`,
-    ),
+/** Rules whose answer changes with the colours alone. */
+const OF_COLOURS = ['color-contrast', 'link-in-text-block'];
+
+async function faultsBy(page: Page, runOnly: RunOptions['runOnly']): Promise<string[]> {
+  const known = await page.evaluate(() => 'axe' in globalThis);
+  if (!known) await page.evaluate(AXE); // an element would be refused by the page's policy
+  // only what is wrong leaves the page: all that axe looked at is megabytes
+  return page.evaluate(
+    async (options) => {
+      const { axe } = globalThis as unknown as { axe: { run: (o: RunOptions) => Promise<AxeResults> } };
+      const { violations } = await axe.run(options);
+      return violations.flatMap((v) =>
+        v.nodes.map(
+          (n) => `${v.id}: ${n.target.join(' ')} (${n.failureSummary?.split('\n')[1]?.trim() ?? v.help})`,
+        ),
+      );
+    },
+    {
+      runOnly,
+      resultTypes: ['violations'],
+      preload: { assets: ['media'], timeout: 10_000 },
+    } satisfies RunOptions,
   );
 }
+
+/** What axe finds against WCAG 2.2 AA and its best practices, one line a fault; empty: nothing. */
+export const axeFaults = (page: Page): Promise<string[]> => faultsBy(page, { type: 'tag', values: TAGS });
+
+/** The same of what colours decide, for a page that was looked at whole in its other colours. */
+export const colourFaults = (page: Page): Promise<string[]> =>
+  faultsBy(page, { type: 'rule', values: OF_COLOURS });
 
 /** What is wrong with a page as it stands on a screen `width` px wide: axe's faults, and a page wider than its screen. */
 export async function faultsShown(page: Page, what: string, width: number): Promise<string[]> {

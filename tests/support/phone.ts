@@ -1,7 +1,5 @@
 import type { Browser, BrowserContext, Page } from 'playwright-core';
-import { hydrated } from './browser';
-import { PASSWORD } from './fleet';
-import { signInAt } from './server';
+import { hydrated, signOnTo } from './browser';
 
 /** A phone in a hand: 390 px, touch, and whoever is signed in on it. */
 export async function phoneOf(
@@ -19,13 +17,6 @@ export async function phoneOf(
   });
   await signOnTo(context, url, who);
   return context;
-}
-
-/** Puts somebody’s session into a phone or another browser, as a sign-in would. */
-export async function signOnTo(context: BrowserContext, url: string, who: string): Promise<void> {
-  const [name = '', value = ''] = (await signInAt(url, `${who}@lowfield.example`, PASSWORD)).split('=');
-  await context.clearCookies();
-  await context.addCookies([{ name, value, url }]);
 }
 
 /** Opens the phone's page and waits until the phone could do without a network. */

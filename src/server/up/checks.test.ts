@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { countReport } from './checks.mjs';
+import { countReport, triedAgain } from './checks.mjs';
 
 const file = (status: string, ...tests: string[]) => ({
   status,
@@ -44,4 +44,21 @@ describe('the count of a test run', () => {
       failed: 1,
     });
   });
+});
+
+it('tells which tests passed only when they were tried again', () => {
+  const test = (fullName: string, status: string, ...failureMessages: string[]) => ({
+    fullName,
+    status,
+    failureMessages,
+  });
+  const name = '/somewhere/tests/e2e/pages.test.ts';
+  expect(
+    triedAgain({
+      testResults: [
+        { name, assertionResults: [test('at once', 'passed'), test('the fleet', 'passed', 'timed out')] },
+        { name, assertionResults: [test('never', 'failed', 'timed out', 'timed out')] },
+      ],
+    }),
+  ).toEqual(['pages.test.ts › the fleet']);
 });

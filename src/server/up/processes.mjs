@@ -116,11 +116,14 @@ export function launch(program, args, { evenAtEnd = false, ...options } = {}) {
   return child;
 }
 
-/** Runs a program to its end. Never rejects on a bad exit: the caller reads `code` and `out`. */
+/** Runs a program to its end, `niceness` behind others. Never rejects on a bad exit: the caller reads `code` and `out`. */
 export function run(program, args, options = {}) {
-  const { input, onLine, ...rest } = options;
+  const { input, onLine, niceness, ...rest } = options;
+  const [first, ...others] = niceness
+    ? ['nice', '-n', String(niceness), program, ...args]
+    : [program, ...args];
   return new Promise((resolve, reject) => {
-    const child = launch(program, args, {
+    const child = launch(first, others, {
       ...rest,
       stdio: [input === undefined ? 'ignore' : 'pipe', 'pipe', 'pipe'],
     });
