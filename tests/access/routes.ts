@@ -1,6 +1,9 @@
 import { randomUUID } from 'node:crypto';
 import { get, type Route, type Target } from './route';
+import { API_AND_TOKENS } from './routes-api';
 import { AS_BUILT_ROUTES } from './routes-as-built';
+import { CASES } from './routes-cases';
+import { CAUSES } from './routes-causes';
 import { DESIGN_AND_EQUIPMENT } from './routes-equipment';
 import { IMPORT_SERIALS_ROOF } from './routes-import';
 import { HANDOVER } from './routes-handover';
@@ -8,18 +11,23 @@ import { INGEST_LOGGERS_HISTORY } from './routes-ingest';
 import { PEOPLE_AND_ACCOUNTS } from './routes-people';
 import { FIGURES } from './routes-figures';
 import { SHARED_PAGES } from './routes-share';
+import { WORKBENCH } from './routes-workbench';
 
 export type { Route, Target } from './route';
 
 /** Every route of the product. A file under src/pages that is not here fails the matrix. */
 export const ROUTES: readonly Route[] = [
+  ...API_AND_TOKENS,
   ...AS_BUILT_ROUTES,
+  ...CASES,
+  ...CAUSES,
   ...DESIGN_AND_EQUIPMENT,
   ...IMPORT_SERIALS_ROOF,
   ...INGEST_LOGGERS_HISTORY,
   ...HANDOVER,
   ...PEOPLE_AND_ACCOUNTS,
   ...SHARED_PAGES,
+  ...WORKBENCH,
   ...FIGURES,
   // pages
   get('index.astro', 'fleet.read', 'nothing', () => '/'),

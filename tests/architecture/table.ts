@@ -40,6 +40,9 @@ export const FEATURES = [
   'serials',
   'roof',
   'design',
+  'causes',
+  'jobs',
+  'planned-works',
   'notices',
   'webhooks',
 ] as const;

@@ -1,18 +1,14 @@
-import { Logger, parseCronItems, run, runMigrations, type Runner } from 'graphile-worker';
+import { parseCronItems, run, runMigrations, type Runner } from 'graphile-worker';
 import { config } from '../config';
 import { Listener } from '../live/listener';
 import { log } from '../log';
 import { CHANNELS } from '../queries/live-notices';
 import { keepDays } from './keep-days';
+import { logger } from './logger';
 import { CRON, TASKS } from './tasks';
 import { TellWatch } from './tell';
 
 /** Background jobs. The library keeps its queue as the database's owner; the jobs themselves work as ingest. */
-
-const LEVELS = { error: 'error', warning: 'warn', info: 'debug', debug: 'debug' } as const;
-export const logger = new Logger(() => (level, message) => {
-  log[LEVELS[level]]({ from: 'jobs' }, message);
-});
 
 /** A site's verdicts change in bursts: its causes are looked for so long after the first, once. */
 const GATHER_MS = 1000;

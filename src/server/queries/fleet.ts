@@ -20,7 +20,10 @@ export async function contactsOf(tx: Tx, siteIds?: readonly number[]): Promise<S
  * Who has taken each cause on. It counts only for what was there then: a unit that joined the cause afterwards, or a
  * cause that came back, asks anew.
  */
-export async function acknowledgementsOf(tx: Tx, causes: readonly CauseNow[]): Promise<Acknowledgement[]> {
+export async function acknowledgementsOf(
+  tx: Tx,
+  causes: readonly Pick<CauseNow, 'key' | 'siteId' | 'since' | 'units'>[],
+): Promise<Acknowledgement[]> {
   if (causes.length === 0) return [];
   const { rows } = await tx.raw<{ rows: { key: string; siteId: string; at: Date; person: string }[] }>(
     `select distinct on (e.detail ->> 'key') e.detail ->> 'key' as key, site.ref as "siteId", e.at,
@@ -33,7 +36,49 @@ export async function acknowledgementsOf(tx: Tx, causes: readonly CauseNow[]): P
   const newest = new Map(
     causes.map((c) => [c.key, [c.since, ...c.units.map((u) => u.since)].sort().at(-1) ?? c.since]),
   );
-  return rows.map((r) => ({ ...r, at: r.at.toISOString() })).filter((r) => r.at >= (newest.get(r.key) ?? ''));
+  const said = rows
+    .map((r) => ({ ...r, at: r.at.toISOString() }))
+    .filter((r) => r.at >= (newest.get(r.key) ?? ''));
+  const known = new Set(said.map((r) => r.key));
+  return [
+    ...said,
+    ...(await takenOnApart(
+      tx,
+      causes.filter((c) => !known.has(c.key)),
+    )),
+  ];
+}
+
+/** Units that stand alone are one entry here and a row each on record: all rows taken on, the entry is. */
+async function takenOnApart(
+  tx: Tx,
+  causes: readonly Pick<CauseNow, 'key' | 'siteId' | 'units'>[],
+): Promise<Acknowledgement[]> {
+  if (causes.length === 0) return [];
+  const { rows } = await tx.raw<{
+    rows: {
+      siteId: string;
+      at: Date;
+      person: string;
+      units: { stringId: string; position: number | null }[];
+    }[];
+  }>(
+    `select site.ref as "siteId", c.acknowledged_at as at, p.name as person, c.units
+     from cause c join site on site.id = c.site_id join person p on p.id = c.acknowledged_by
+     where c.hazard and c.closed_at is null and c.acknowledged_at is not null and site.ref::text = any (:sites) and ${SITE_VISIBLE}
+     order by c.acknowledged_at`,
+    { sites: [...new Set(causes.map((c) => c.siteId))] },
+  );
+  const unitKey = (u: { stringId: string; position: number | null }): string =>
+    `${u.stringId} ${u.position ?? ''}`;
+  return causes.flatMap((c) => {
+    const here = rows.filter((r) => r.siteId === c.siteId);
+    const taken = new Set(here.flatMap((r) => r.units.map(unitKey)));
+    const last = here.at(-1);
+    return last && c.units.length > 0 && c.units.every((u) => taken.has(unitKey(u)))
+      ? [{ key: c.key, siteId: c.siteId, at: last.at.toISOString(), person: last.person }]
+      : [];
+  });
 }
 
 export async function addAcknowledgement(

@@ -1,5 +1,6 @@
 import type { Knex } from 'knex';
 import type { Tx } from '../db/transaction';
+import { SITE_VISIBLE } from './visible-site';
 
 /** What background jobs did and when. The queue itself is the library's: queries/job-queue. */
 
@@ -52,6 +53,9 @@ export interface RunRow {
 const RUN = `r.task, site.ref as "siteRef", site.name as "siteName", r.started_at as "startedAt", r.ended_at as "endedAt",
   r.attempt, r.failed, r.done`;
 
+/** Runs of every site, and those of sites that the actor sees: the wall in the query, beside the policy. */
+const SEEN = `(job_run.site_id is null or exists (select from site where site.id = job_run.site_id and ${SITE_VISIBLE}))`;
+
 export interface TaskRuns {
   task: string;
   runs24h: number;
@@ -63,13 +67,13 @@ export interface TaskRuns {
 /** Of each task the newest run that the actor may see, and counts of the last day. */
 export async function lastRuns(tx: Tx, at: Date): Promise<{ last: RunRow[]; counts: TaskRuns[] }> {
   const last = await tx.raw<{ rows: RunRow[] }>(
-    `select ${RUN} from (select distinct on (task) * from job_run order by task, started_at desc, id desc) r
+    `select ${RUN} from (select distinct on (task) * from job_run where ${SEEN} order by task, started_at desc, id desc) r
      left join site on site.id = r.site_id`,
   );
   const counts = await tx.raw<{ rows: TaskRuns[] }>(
     `select task, count(*)::int as "runs24h", count(failed)::int as "failed24h",
             percentile_cont(0.5) within group (order by extract(epoch from ended_at - started_at) * 1000) as "usualMs"
-     from job_run where started_at > :at::timestamptz - interval '24 hours' group by task`,
+     from job_run where ${SEEN} and started_at > :at::timestamptz - interval '24 hours' group by task`,
     { at },
   );
   return { last: last.rows, counts: counts.rows };
@@ -78,9 +82,19 @@ export async function lastRuns(tx: Tx, at: Date): Promise<{ last: RunRow[]; coun
 /** The newest failures that the actor may see. */
 export async function failedRuns(tx: Tx, limit: number): Promise<RunRow[]> {
   const { rows } = await tx.raw<{ rows: RunRow[] }>(
-    `select ${RUN} from job_run r left join site on site.id = r.site_id
-     where r.failed is not null order by r.started_at desc limit ?`,
+    `select ${RUN} from (select * from job_run where failed is not null and ${SEEN}) r left join site on site.id = r.site_id
+     order by r.started_at desc limit ?`,
     [limit],
   );
   return rows;
+}
+
+/** Names of the sites of these numbers that the actor may see. */
+export async function sitesByNumber(tx: Tx, numbers: readonly number[]): Promise<Map<number, string>> {
+  if (numbers.length === 0) return new Map();
+  const { rows } = await tx.raw<{ rows: { id: number; name: string }[] }>(
+    `select site.id, site.name from site where site.id = any (:numbers::int4[]) and ${SITE_VISIBLE}`,
+    { numbers: [...new Set(numbers)] },
+  );
+  return new Map(rows.map((r) => [r.id, r.name]));
 }

@@ -1,11 +1,13 @@
 import type { Actor } from '../../domain/access/permissions';
 import type { AcknowledgeReply } from '../../schemas/api/fleet';
+import type { CauseNow } from '../../schemas/api/now';
 import type { Tx } from '../db/transaction';
 import { AppError } from '../errors';
 import { acknowledgementsOf, addAcknowledgement, contactsOf } from '../queries/fleet';
 import { tellSiteChanged } from '../queries/live-notices';
 import { addAuditEntry } from '../queries/people';
-import { visibleSite } from '../queries/visible-site';
+import { openHazard, takeOnHazards } from '../queries/causes-list';
+import { visibleSite, type VisibleSite } from '../queries/visible-site';
 import { causesNow } from './causes';
 
 export interface AcknowledgeCall {
@@ -30,7 +32,8 @@ export async function acknowledge(
   const site = await visibleSite(tx, call.site);
   if (!site)
     throw new AppError('not_found', { message: 'No such site. Check the link, or go back to the fleet.' });
-  const cause = (await causesNow(tx, at, [site.id])).find((c) => c.key === call.key);
+  const now = await causesNow(tx, at, [site.id]);
+  const cause = now.find((c) => c.key === call.key) ?? (await storedHazard(tx, site, call.key));
   if (!cause)
     throw new AppError('conflict', {
       message: 'This has ended or changed meanwhile. Load the page again to see how it stands.',
@@ -48,6 +51,12 @@ export async function acknowledge(
     headline: cause.headline,
     person: call.person,
   });
+  await takeOnHazards(
+    tx,
+    site.id,
+    cause.units.map((u) => `${u.stringId} ${u.position ?? ''}`),
+    { id: actor.personId, at },
+  );
   await addAuditEntry(tx, {
     organisationId: actor.organisationId,
     personId: actor.personId,
@@ -62,3 +71,10 @@ export async function acknowledge(
     contact,
   };
 }
+
+/** A hazard that stands on record though nobody sees it at this moment: it may be taken on from its own page. */
+async function storedHazard(tx: Tx, site: VisibleSite, key: string): Promise<Acknowledged | undefined> {
+  const row = await openHazard(tx, site.id, key);
+  return row && { ...row, key, siteId: site.ref, since: row.since.toISOString() };
+}
+type Acknowledged = Pick<CauseNow, 'key' | 'siteId' | 'headline' | 'since' | 'units'>;

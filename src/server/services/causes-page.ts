@@ -1,0 +1,44 @@
+import { caseKindOf } from '../../domain/cases/cases';
+import { CHECKLIST_SOURCE, checklistOf } from '../../domain/cases/checklists';
+import type { CausePage, CausesPage, CausesView } from '../../schemas/api/causes';
+import type { Tx } from '../db/transaction';
+import { found } from '../errors';
+import { causeEvents, currencyOf, listCauses, oneCause, sitesWithCauses } from '../queries/causes-list';
+import { contactsOf } from '../queries/fleet';
+
+const SHOWN_MAX = 300;
+
+export async function causesPage(tx: Tx, view: CausesView, at: Date): Promise<CausesPage> {
+  const currency = await currencyOf(tx);
+  const causes = await listCauses(tx, view, currency, SHOWN_MAX + 1);
+  return {
+    at: at.toISOString(),
+    view,
+    causes: causes.slice(0, SHOWN_MAX),
+    more: causes.length > SHOWN_MAX,
+    sites: await sitesWithCauses(tx),
+    currency,
+  };
+}
+
+/**
+ * One cause with its history, whom to call and what to check first.
+ * @throws AppError not_found
+ */
+export async function causePage(tx: Tx, ref: string, at: Date): Promise<CausePage> {
+  const currency = await currencyOf(tx);
+  const { siteNumber, ...cause } = found(await oneCause(tx, ref, currency), 'cause');
+  return {
+    ...cause,
+    at: at.toISOString(),
+    currency,
+    contact: (await contactsOf(tx, [siteNumber]))[0] ?? null,
+    events: await causeEvents(tx, { ...cause, siteNumber }),
+    checks: checklistOf(caseKindOf(cause.kind)).map(({ check, why, caution }) => ({
+      check,
+      why,
+      caution: caution ?? null,
+    })),
+    checksSource: CHECKLIST_SOURCE,
+  };
+}
