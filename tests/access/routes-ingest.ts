@@ -57,7 +57,7 @@ export const INGEST_LOGGERS_HISTORY: readonly Route[] = [
     served: [422],
   },
   {
-    file: 'api/sites/[site]/history-imports/[made]/undo.ts',
+    file: 'api/sites/[site]/history-imports/[import]/undo.ts',
     method: 'POST',
     permission: 'history.import',
     of: 'site',

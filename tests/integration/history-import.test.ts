@@ -8,7 +8,7 @@ import {
   POST as importRoute,
   GET as listRoute,
 } from '../../src/pages/api/sites/[site]/history-imports/index';
-import { POST as undoRoute } from '../../src/pages/api/sites/[site]/history-imports/[made]/undo';
+import { POST as undoRoute } from '../../src/pages/api/sites/[site]/history-imports/[import]/undo';
 import type { HistoryImportView, HistoryLine } from '../../src/schemas/api/history-import';
 import { asActor } from '../../src/server/db/transaction';
 import { subjectsOf } from '../../src/server/queries/history-import';
@@ -86,11 +86,11 @@ async function send(
   return {
     lines,
     made: last && 'outcome' in last ? last.outcome : undefined,
-    problem: last && 'problem' in last ? (last.problem as Problem) : undefined,
+    problem: last && 'problem' in last ? (last.problem) : undefined,
   };
 }
 const undo = (made: string, who = analyst) =>
-  ask(undoRoute, { actor: who, method: 'POST', params: { site: site.ref, made }, body: { reason: '' } });
+  ask(undoRoute, { actor: who, method: 'POST', params: { site: site.ref, import: made }, body: { reason: '' } });
 const counted = async (table: string): Promise<number> =>
   (await db.owner.query<{ n: number }>(`select count(*)::int as n from ${table}`)).rows[0]!.n;
 

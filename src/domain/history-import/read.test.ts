@@ -74,7 +74,7 @@ describe('columns of a file', () => {
 
   it('what is missing is said', () => {
     const base = { hasHeader: true, timeZone: 'UTC', dayFirst: null, decimalMark: null };
-    expect(layoutFault({ ...base, columns: [{ as: 'string' }] } as Layout)).toContain('date and time');
+    expect(layoutFault({ ...base, columns: [{ as: 'string' }] })).toContain('date and time');
     expect(layoutFault({ columns: [{ as: 'at' }] })).toContain('at least one column');
     expect(layoutFault({ columns: [{ as: 'at' }, { as: 'power', unit: 'W', of: null }] })).toContain(
       'of what',

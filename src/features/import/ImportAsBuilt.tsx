@@ -8,8 +8,8 @@ import { ChangesSheet } from './ChangesSheet';
 import { ColumnsSheet } from './ColumnsSheet';
 import { DecisionsSheet } from './DecisionsSheet';
 import { FaultsSheet } from './FaultsSheet';
-import { FileSheet } from './FileSheet';
-import { ProgressLine } from './ProgressLine';
+import { FileSheet } from '../../components/table-file/FileSheet';
+import { ProgressLine } from '../../components/table-file/ProgressLine';
 import { faultsOf, useImport } from './use-import';
 import { finding } from './words';
 
@@ -50,7 +50,14 @@ export function ImportAsBuilt({ initial }: { initial: ImportPage }) {
         {said.heading}
       </p>
       <div className="grid gap-6">
-        {busy && <ProgressLine words={busy.words} share={busy.share} onStop={busy.stop ?? undefined} />}
+        {busy && (
+          <ProgressLine
+            words={busy.words}
+            share={busy.share}
+            onStop={busy.stop ?? undefined}
+            stopWords="Stop: keep the as-built as it is"
+          />
+        )}
         {error && (
           <Notice
             kind="failed"
@@ -132,7 +139,16 @@ export function ImportAsBuilt({ initial }: { initial: ImportPage }) {
             <ColumnsSheet facts={facts} match={match} onMatch={work.setColumn} />
           )}
           <FileSheet
-            site={site}
+            hint={
+              <>
+                One row a slot: string, position, serial, and what else you have. Comma, semicolon or tab; any
+                common encoding.{' '}
+                <a className="text-petrol hover:underline" href={paths.api.asBuiltCsv(site)}>
+                  Take the as-built as it stands
+                </a>{' '}
+                as a pattern: it comes back in unchanged.
+              </>
+            }
             name={work.name}
             facts={facts}
             fault={work.fileFault}

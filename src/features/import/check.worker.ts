@@ -1,6 +1,6 @@
+import type { Separator } from '../../components/table-file/parse';
 import type { KnownNames } from '../../domain/commissioning/import/table';
 import { Desk, type CheckedFile, type CheckOrder, type FileFacts } from './desk';
-import type { Separator } from './parse';
 
 /** The desk in a thread of its own: one order at a time, each answered by its number. */
 export type DeskOrder = { id: number } & (

@@ -16,8 +16,14 @@ import {
   type KnownNames,
   type NameColumn,
 } from '../../domain/commissioning/import/table';
-import { decode, type Encoding } from './decode';
-import { parseText, ROWS_MAX, separatorOf, type ParsedFile, type Separator } from './parse';
+import { decode, type Encoding } from '../../components/table-file/decode';
+import {
+  parseText,
+  ROWS_MAX,
+  separatorOf,
+  type ParsedFile,
+  type Separator,
+} from '../../components/table-file/parse';
 
 /** What the desk says of a file before anything is checked. */
 export interface FileFacts {

@@ -1,4 +1,5 @@
 import { ApiError, errorOf } from '../../lib/api';
+import { linesOf } from '../../lib/ndjson';
 import type { ImportBody, ImportLine, ImportOutcome, ImportStep } from '../../schemas/api/import';
 import { paths } from '../../schemas/paths';
 
@@ -13,20 +14,6 @@ const BROKEN = new ApiError(
   'The connection broke before the server had answered',
   'Nothing is half done: either all of the file is in the as-built or nothing of it. Check the file again to see which.',
 );
-
-/** The lines of an answer one by one. */
-async function* linesOf(body: ReadableStream<Uint8Array>): AsyncGenerator<ImportLine> {
-  const reader = body.pipeThrough(new TextDecoderStream() as TransformStream<Uint8Array, string>).getReader();
-  let rest = '';
-  for (;;) {
-    const { done, value } = await reader.read();
-    if (done) break;
-    const lines = (rest + value).split('\n');
-    rest = lines.pop() ?? '';
-    for (const line of lines) if (line.trim() !== '') yield JSON.parse(line) as ImportLine;
-  }
-  if (rest.trim() !== '') yield JSON.parse(rest) as ImportLine;
-}
 
 /**
  * Sends an import and tells its progress.
@@ -47,7 +34,7 @@ export async function sendImport(
       ...(signal ? { signal } : {}),
     });
     if (!response.ok || !response.body) throw await errorOf(response);
-    for await (const line of linesOf(response.body)) {
+    for await (const line of linesOf<ImportLine>(response.body)) {
       if ('progress' in line) onProgress(line.progress);
       else if ('outcome' in line) return line.outcome;
       else {

@@ -106,7 +106,7 @@ export type HistoryLine =
       };
     };
 
-export const historyImportParams = z.object({ site: id, made: id });
+export const historyImportParams = z.object({ site: id, import: id });
 export const undoImport = z.strictObject({ reason: z.string().trim().max(500).default('') });
 
 export type { HistoryFault };

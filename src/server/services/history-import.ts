@@ -236,13 +236,13 @@ function checkSeen(reader: HistoryReader, seen: HistoryOrder['seen']): void {
 export async function takeImportBack(
   tx: Tx,
   actor: Actor,
-  refs: { site: string; made: string },
+  refs: { site: string; import: string },
   reason: string,
   { at, address }: How,
 ): Promise<HistoryImportView> {
   const site = found(await visibleSite(tx, refs.site), 'site');
   const { undone, fileName, readings } = found(
-    await undoImport(tx, site.id, refs.made, actor.personId, at),
+    await undoImport(tx, site.id, refs.import, actor.personId, at),
     'import',
   );
   if (undone)
@@ -254,11 +254,11 @@ export async function takeImportBack(
     personId: actor.personId,
     address,
     action: 'history.undone',
-    subject: `import ${refs.made}`,
+    subject: `import ${refs.import}`,
     siteId: site.id,
     after: { of: fileName, readings },
     reason,
   });
   await tellSiteChanged(tx, site.id);
-  return found((await importsOfSite(tx, site.id, refs.made))[0], 'import');
+  return found((await importsOfSite(tx, site.id, refs.import))[0], 'import');
 }

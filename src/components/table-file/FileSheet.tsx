@@ -1,18 +1,30 @@
-import { useId, useState, type DragEvent } from 'react';
-import { Button } from '../../components/ui/Button';
-import { Choice } from '../../components/ui/Choice';
-import { Notice } from '../../components/ui/Notice';
-import { Sheet } from '../../components/ui/Sheet';
+import { useId, useState, type DragEvent, type ReactNode } from 'react';
+import { Button } from '../ui/Button';
+import { Choice } from '../ui/Choice';
+import { Notice } from '../ui/Notice';
+import { Sheet } from '../ui/Sheet';
 import { number } from '../../drawings/numbers';
-import { paths } from '../../schemas/paths';
-import { ENCODING_NAMES } from './decode';
-import type { FileFacts } from './desk';
+import { ENCODING_NAMES, type Encoding } from './decode';
 import { SEPARATOR_NAMES, SEPARATORS, type Separator } from './parse';
 
+/** What is said of a file before its cells are looked at. */
+export interface TableFacts {
+  /** null: it was pasted. */
+  encoding: Encoding | null;
+  separator: Separator;
+  /** Without the header. */
+  rows: number;
+  emptyLines: number;
+  headers: string[];
+  hasHeader: boolean;
+  faults: { line: number; message: string }[];
+}
+
 interface Props {
-  site: string;
+  /** What a row is, and what else helps whoever makes the file. */
+  hint: ReactNode;
   name: string | null;
-  facts: FileFacts | null;
+  facts: TableFacts | null;
   /** What was wrong with the file as a whole. */
   fault: string | null;
   onFile: (file: File) => void;
@@ -21,7 +33,7 @@ interface Props {
 }
 
 /** Where the file comes in, and how it was read. */
-export function FileSheet({ site, name, facts, fault, onFile, onPaste, onSplit }: Props) {
+export function FileSheet({ hint, name, facts, fault, onFile, onPaste, onSplit }: Props) {
   const [over, setOver] = useState(false);
   const [pasted, setPasted] = useState('');
   const fileId = useId();
@@ -60,14 +72,7 @@ export function FileSheet({ site, name, facts, fault, onFile, onPaste, onSplit }
               event.target.value = ''; // the same file again, mended meanwhile, is a choice too
             }}
           />
-          <p className="mt-2 text-sm text-ink-2">
-            One row a slot: string, position, serial, and what else you have. Comma, semicolon or tab; any
-            common encoding.{' '}
-            <a className="text-petrol hover:underline" href={paths.api.asBuiltCsv(site)}>
-              Take the as-built as it stands
-            </a>{' '}
-            as a pattern: it comes back in unchanged.
-          </p>
+          <p className="mt-2 text-sm text-ink-2">{hint}</p>
         </div>
         <div>
           <label htmlFor={pasteId} className="mb-1 block font-medium">

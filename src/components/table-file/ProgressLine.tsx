@@ -1,14 +1,16 @@
-import { Button } from '../../components/ui/Button';
+import { Button } from '../ui/Button';
 
 interface Props {
   words: string;
   /** 0 to 1; null: not known. */
   share: number | null;
   onStop?: (() => void) | undefined;
+  /** What stopping leaves. */
+  stopWords: string;
 }
 
 /** How far long work is, for eyes and for screen readers. */
-export function ProgressLine({ words, share, onStop }: Props) {
+export function ProgressLine({ words, share, onStop, stopWords }: Props) {
   return (
     <div
       className="flex flex-wrap items-center gap-x-4 gap-y-2 border border-rule bg-sheet p-3"
@@ -20,7 +22,7 @@ export function ProgressLine({ words, share, onStop }: Props) {
         className="h-2 min-w-[120px] flex-1 accent-petrol"
         {...(share === null ? {} : { value: share, max: 1 })}
       />
-      {onStop && <Button onClick={onStop}>Stop: keep the as-built as it is</Button>}
+      {onStop && <Button onClick={onStop}>{stopWords}</Button>}
     </div>
   );
 }

@@ -1,0 +1,80 @@
+import { useState } from 'react';
+import { Button } from '../../components/ui/Button';
+import { Field } from '../../components/ui/Field';
+import { Sheet } from '../../components/ui/Sheet';
+import { Table } from '../../components/ui/Table';
+import { counted, number } from '../../drawings/numbers';
+import type { CheckedHistory } from './desk';
+import { span } from './words';
+
+interface Props {
+  checked: CheckedHistory;
+  timeZone: string;
+  busy: boolean;
+  onImport: (note: string) => void;
+}
+const SHOWN = 30;
+
+/** What would come in, string by string, and the button that keeps it. */
+export function PreviewSheet({ checked, timeZone, busy, onImport }: Props) {
+  const [note, setNote] = useState('');
+  const [all, setAll] = useState(false);
+  const { series } = checked;
+  return (
+    <Sheet id="preview" flush title="What would come in" aside={counted(checked.rows, 'row')}>
+      <Table
+        caption="Readings by string, unit, input and inverter"
+        rows={all ? series : series.slice(0, SHOWN)}
+        rowKey={(s) => s.words}
+        columns={[
+          {
+            key: 'of',
+            label: 'Of',
+            cell: (s) => (
+              <>
+                <span className="font-medium">{s.words}</span>
+                <span className="block text-sm text-ink-2 sm:hidden">{s.quantities.join(', ')}</span>
+              </>
+            ),
+          },
+          { key: 'what', label: 'What', from: 'sm', cell: (s) => s.quantities.join(', ') },
+          { key: 'readings', label: 'Readings', numeric: true, cell: (s) => number(s.readings) },
+          {
+            key: 'when',
+            label: 'From and to, at the site',
+            cell: (s) => span(s.from * 1000, s.to * 1000, timeZone),
+          },
+        ]}
+      />
+      {series.length > SHOWN && !all && (
+        <Button className="mt-3" onClick={() => setAll(true)}>
+          Show all {number(series.length)}
+        </Button>
+      )}
+      {checked.doubles > 0 && (
+        <p className="mt-3 text-[15px]">
+          {counted(checked.doubles, 'reading')} of an instant that came before: the first one counts.
+        </p>
+      )}
+      <form
+        className="mt-5 grid gap-4 border-t border-rule pt-4 md:grid-cols-[minmax(0,420px)_auto] md:items-end"
+        onSubmit={(event) => {
+          event.preventDefault();
+          onImport(note);
+        }}
+      >
+        <Field
+          label="Where they come from"
+          value={note}
+          maxLength={500}
+          onChange={(event) => setNote(event.target.value)}
+          placeholder="the logger before ours, portal export, …"
+        />
+        <Button weight="primary" type="submit" disabled={busy} className="justify-self-start">
+          Import {counted(checked.readings, 'reading')}
+          {checked.leftOut > 0 && `, leave ${counted(checked.leftOut, 'cell')} out`}
+        </Button>
+      </form>
+    </Sheet>
+  );
+}
