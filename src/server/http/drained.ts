@@ -1,11 +1,11 @@
-import type { ServerResponse } from 'node:http';
+import type { Writable } from 'node:stream';
 
 /**
  * A wait for whoever reads an answer: Astro writes what it gets as fast as it gets it, so a stream that is longer than
  * memory asks here before each piece. Also resolves when the reader has gone.
  */
 export const drainedOf =
-  (response: ServerResponse): (() => Promise<void>) =>
+  (response: Writable): (() => Promise<void>) =>
   () =>
     !response.writableNeedDrain || response.destroyed
       ? Promise.resolve()

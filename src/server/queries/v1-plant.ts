@@ -31,7 +31,7 @@ export async function sitesFrom(
   rows: number,
 ): Promise<SiteRow[]> {
   const found = await tx.raw<{ rows: SiteRow[] }>(
-    `select id as number, ref as id, name, place, latitude::float8 as latitude, longitude::float8 as longitude,
+    `select id as number, ref as id, name, place, latitude::numeric::float8 as latitude, longitude::numeric::float8 as longitude,
             time_zone as "timeZone", stage, rule_set as "ruleSet", to_char(switched_on_on, 'YYYY-MM-DD') as "switchedOnOn"
      from site
      where ${SITE_VISIBLE} and (:site::uuid is null or ref = :site) and (:stage::text is null or stage = :stage)
@@ -82,8 +82,8 @@ export async function stringsFrom(
 ): Promise<StringRow[]> {
   const found = await tx.raw<{ rows: StringRow[] }>(
     `select s.id as number, site.id as "siteNumber", s.ref as id, s.name, site.ref as "siteId", site.name as "siteName",
-            s.kind, s.slots, ut.name as "unitType", p.name as plane, p.surface_tilt::float8 as "surfaceTilt",
-            p.surface_azimuth::float8 as "surfaceAzimuth", inv.name as inverter, i.number as input, z.name as zone,
+            s.kind, s.slots, ut.name as "unitType", p.name as plane, p.surface_tilt::numeric::float8 as "surfaceTilt",
+            p.surface_azimuth::numeric::float8 as "surfaceAzimuth", inv.name as inverter, i.number as input, z.name as zone,
             l.serial as logger, st.at as "reportedAt", st.voltage_sum / 100.0::float8 as voltage,
             st.power_sum / 10.0::float8 as power
      from string s

@@ -11,6 +11,8 @@ import { addAuditEntry } from '../queries/people';
 import { siteChoices } from '../queries/site';
 import type { Caller } from './my-account';
 
+type Maker = Pick<Caller, 'actor' | 'address'>;
+
 const DAY_MS = 86_400_000;
 
 const tokenItem = (t: TokenRow, at: Date): TokenItem => ({
@@ -50,7 +52,7 @@ async function numbersOf(tx: Tx, sites: readonly string[]): Promise<number[] | n
  * A new token for a program of one's own, with one's password. It is shown this once; the database has its hash.
  * @throws AppError invalid (at its field) · conflict (too many tokens) · too_many (wrong passwords)
  */
-export async function makeToken(tx: Tx, caller: Caller, body: MakeToken, at: Date): Promise<MadeToken> {
+export async function makeToken(tx: Tx, caller: Maker, body: MakeToken, at: Date): Promise<MadeToken> {
   const { actor, address } = caller;
   try {
     await confirmPassword(actor.personId, body.current);
@@ -92,7 +94,7 @@ export async function makeToken(tx: Tx, caller: Caller, body: MakeToken, at: Dat
 }
 
 /** Ends a token of one's own; it lets nobody in from this moment. @throws AppError not_found */
-export async function endToken(tx: Tx, { actor, address }: Caller, ref: string, at: Date): Promise<void> {
+export async function endToken(tx: Tx, { actor, address }: Maker, ref: string, at: Date): Promise<void> {
   const [name] = await endTokens(tx, actor.personId, { endedBy: actor.personId, at, ref });
   found(name, 'token');
   await addAuditEntry(tx, {

@@ -11,9 +11,6 @@ import { causesNow } from './causes';
 export async function developersPage(tx: Tx, origin: string, at: Date): Promise<OperationShown[]> {
   const plant = await exampleOfPlant(tx);
   const [test] = await shutdownTestsFrom(tx, {}, null, 1);
-  const cause = (await causesNow(tx, at)).find((c) => c.siteId === plant?.site);
-  return operationsShown(
-    origin,
-    exampleValues(at, randomUUID(), plant, { cause: cause?.key, test: test?.id }),
-  );
+  const [cause] = await causesNow(tx, at);
+  return operationsShown(origin, exampleValues(at, plant, { cause, test: test?.id }), randomUUID);
 }

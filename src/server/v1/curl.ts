@@ -7,7 +7,9 @@ import type { Operation } from './operation';
 export interface ExampleValues {
   site: string;
   string: string;
+  /** A cause that holds now, and its site. */
   cause: string;
+  causeSite: string;
   test: string;
   ref: string;
   from: string;
@@ -22,17 +24,16 @@ const NONE = '00000000-0000-4000-8000-000000000000';
 /** Yesterday's hour about noon and the week before it, for the plant given. */
 export function exampleValues(
   at: Date,
-  ref: string,
   plant: { site: string; string: string } | undefined,
-  others: { cause?: string | undefined; test?: string | undefined } = {},
-): ExampleValues {
+  others: { cause?: { key: string; siteId: string } | undefined; test?: string | undefined } = {},
+): Omit<ExampleValues, 'ref'> {
   const dayOf = (days: number) => new Date(at.getTime() - days * 86_400_000).toISOString().slice(0, 10);
   return {
     site: plant?.site ?? NONE,
     string: plant?.string ?? NONE,
-    cause: others.cause ?? 'KEY OF A CAUSE',
+    cause: others.cause?.key ?? 'KEY OF A CAUSE',
+    causeSite: others.cause?.siteId ?? plant?.site ?? NONE,
     test: others.test ?? NONE,
-    ref,
     from: `${dayOf(1)}T11:00:00Z`,
     to: `${dayOf(1)}T12:00:00Z`,
     fromDay: dayOf(8),
@@ -51,23 +52,36 @@ function filled(value: unknown, values: ExampleValues): unknown {
 }
 const quoted = (text: string): string => `'${text.replaceAll("'", `'\\''`)}'`;
 
-/** One command. @param origin of the site, as the reader reaches it */
-export function curlOf(operation: Operation, origin: string, values: ExampleValues): string {
+export interface ExampleRequest {
+  /** With its query, from /api/v1 on. */
+  path: string;
+  body: unknown;
+}
+/** What an example asks. */
+export function exampleRequest(operation: Operation, values: ExampleValues): ExampleRequest {
   const { path = {}, query = {}, body } = operation.example;
   const address = operation.path.replace(/\{(\w+)\}/g, (_all, name: string) =>
     encodeURIComponent(String(filled(path[name] ?? '', values))),
   );
   const search = new URLSearchParams(filled(query, values) as Record<string, string>).toString();
-  const url = `${origin}${paths.api.v1(address)}${search ? `?${search}` : ''}`;
+  return {
+    path: `${paths.api.v1(address)}${search ? `?${search}` : ''}`,
+    body: body && filled(body, values),
+  };
+}
+
+/** One command. @param origin of the site, as the reader reaches it */
+export function curlOf(operation: Operation, origin: string, values: ExampleValues): string {
+  const { path, body } = exampleRequest(operation, values);
   const lines = [
-    `curl --silent --show-error --fail-with-body ${quoted(url)}`,
+    `curl --silent --show-error --fail-with-body ${quoted(`${origin}${path}`)}`,
     `-H "Authorization: Bearer $WAKELINE_TOKEN"`,
   ];
-  if (body)
+  if (body !== undefined)
     lines.push(
       `-H 'Content-Type: application/json'`,
       `-H ${quoted(`Idempotency-Key: ${values.ref}`)}`,
-      `--data ${quoted(JSON.stringify(filled(body, values)))}`,
+      `--data ${quoted(JSON.stringify(body))}`,
     );
   return lines.join(' \\\n  ');
 }

@@ -79,11 +79,10 @@ describe('an example', () => {
     site: 'a11d1f6e-0000-4000-8000-000000000001',
     string: 'a11d1f6e-0000-4000-8000-000000000002',
   };
-  const values = exampleValues(
-    new Date('2026-11-30T12:00:00Z'),
-    'a11d1f6e-0000-4000-8000-000000000003',
-    plant,
-  );
+  const values = {
+    ...exampleValues(new Date('2026-11-30T12:00:00Z'), plant),
+    ref: 'a11d1f6e-0000-4000-8000-000000000003',
+  };
   it.each(OPERATIONS.map((o) => [o.id, o] as const))(
     '%s is whole and says nothing that is refused',
     (_id, o) => {

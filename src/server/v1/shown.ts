@@ -141,8 +141,16 @@ class Reader {
 let document: Document | undefined;
 const plain = (): Document => (document ??= JSON.parse(JSON.stringify(openApiDocument())) as Document);
 
-/** Every operation that a token can ask for. @param origin of the site, as the reader reaches it */
-export function operationsShown(origin: string, values: ExampleValues): OperationShown[] {
+/**
+ * Every operation that a token can ask for.
+ * @param origin of the site, as the reader reaches it
+ * @param newRef a new identifier for what an example writes
+ */
+export function operationsShown(
+  origin: string,
+  values: Omit<ExampleValues, 'ref'>,
+  newRef: () => string,
+): OperationShown[] {
   const reader = new Reader(plain());
   return OPERATIONS.flatMap((o) => {
     const documented = plain().paths[o.path]?.[o.method.toLowerCase()];
@@ -158,7 +166,7 @@ export function operationsShown(origin: string, values: ExampleValues): Operatio
             scope: o.scope,
             takes: reader.takes(documented),
             answers: reader.answers(documented),
-            curl: curlOf(o, origin, values),
+            curl: curlOf(o, origin, { ...values, ref: newRef() }),
           },
         ]
       : [];

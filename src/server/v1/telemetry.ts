@@ -251,7 +251,7 @@ export const streamQuarters = streaming({
           voltage: row.voltageAvg / 100,
           voltageMin: row.voltageMin / 100,
           voltageMax: row.voltageMax / 100,
-          energy: row.energy / 600,
+          energy: Math.round(row.energy / 6) / 100,
         },
       ]),
     };

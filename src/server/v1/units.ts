@@ -15,7 +15,8 @@ import { reading } from './operation';
 
 type Unit = z.infer<typeof unit>;
 type VerdictItem = z.infer<typeof verdictNow>;
-/** Strings read at once. */
+/** Strings read at once: few at first, since a page is often small; more where little fits a filter. */
+const STRINGS_FIRST = 5;
 const STRINGS_AT_ONCE = 25;
 
 interface Loaded {
@@ -27,8 +28,8 @@ interface Loaded {
 /** Strings that fit, with what holds, from one on, a few at a time. */
 async function* strings(tx: Tx, filter: StringFilter, from: [string, string] | null, at: Date) {
   let start = from && { site: from[0], name: from[1], inclusive: true };
-  for (;;) {
-    const rows = await stringsFrom(tx, filter, start, STRINGS_AT_ONCE);
+  for (let many = STRINGS_FIRST; ; many = STRINGS_AT_ONCE) {
+    const rows = await stringsFrom(tx, filter, start, many);
     const ids = rows.map((r) => r.number);
     const now = new Map((await stringsNow(tx, at, { stringIds: ids })).map((s) => [s.id, s]));
     const since = await placedSince(tx, ids);
@@ -37,7 +38,7 @@ async function* strings(tx: Tx, filter: StringFilter, from: [string, string] | n
       if (s) yield { row, now: s, since } satisfies Loaded;
     }
     const last = rows.at(-1);
-    if (!last || rows.length < STRINGS_AT_ONCE) return;
+    if (!last || rows.length < many) return;
     start = { site: last.siteName, name: last.name, inclusive: false };
   }
 }

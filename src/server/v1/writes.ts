@@ -25,7 +25,7 @@ export const acknowledgeHazard = writing({
   body: acknowledgeBody,
   answer: acknowledgement.meta({ id: 'Acknowledgement' }),
   statuses: { 200: 'Who has it' },
-  example: { path: { site: '$site' }, body: { key: '$cause' } },
+  example: { path: { site: '$causeSite' }, body: { key: '$cause' } },
   run: async ({ tx, actor, holder, params, body, at, address }) => {
     const call = { site: params.site, key: body.key, person: holder.personName, address };
     const { acknowledgement: made } = await acknowledge(tx, actor, call, at);
