@@ -1,5 +1,6 @@
 import { randomUUID } from 'node:crypto';
 import { defineMiddleware } from 'astro:middleware';
+import type { TemperatureUnit } from './drawings/numbers';
 import { cookieName, signedInBy } from './server/auth/sessions';
 import { config } from './server/config';
 import { AppError } from './server/errors';
@@ -51,11 +52,14 @@ export const onRequest = defineMiddleware(async (context, next) => {
   if (context.url.pathname.startsWith('/api/v1/')) return finish(await next(), locals);
 
   let cookies: string[] = [];
+  let units: TemperatureUnit = 'metric';
   try {
     const found = await signedInBy(request.headers.get('cookie') ?? '');
     cookies = found.cookies;
-    if ('actor' in found)
+    if ('actor' in found) {
+      units = found.viewer.units;
       Object.assign(locals, { actor: found.actor, viewer: found.viewer, sessionId: found.sessionId });
+    }
   } catch (error) {
     if (context.url.pathname.startsWith('/api/')) return finish(problem(error, locals.requestId), locals);
     locals.problem = {
@@ -65,7 +69,7 @@ export const onRequest = defineMiddleware(async (context, next) => {
     };
     return finish(await context.rewrite('/problem'), locals);
   }
-  const response = finish(await asReader(locals.viewer?.units ?? 'metric', next), locals);
+  const response = finish(await asReader(units, next), locals);
   // what the answer says of a cookie itself, a new session above all, is the last word
   const said = new Set(response.headers.getSetCookie().map(cookieName));
   for (const cookie of cookies)

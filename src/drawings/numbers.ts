@@ -61,7 +61,19 @@ export const volts = (value: Value): string =>
   quantity(value, 'V', known(value) && Math.abs(value) < 20 ? 1 : 0);
 export const amperes = (value: Value): string =>
   quantity(value, 'A', known(value) && Math.abs(value) < 2 ? 2 : 1);
-export const celsius = (value: Value): string => quantity(value, '°C');
+/** How temperatures are read; what is stored, computed and exchanged stays in °C. */
+export type TemperatureUnit = 'metric' | 'imperial';
+/** In a browser the page says it; a server names whose page it is making. */
+let readersUnit = (): TemperatureUnit =>
+  globalThis.document?.documentElement.dataset.units === 'imperial' ? 'imperial' : 'metric';
+export const readTemperaturesBy = (unit: () => TemperatureUnit): void => {
+  readersUnit = unit;
+};
+/** A temperature in °C, as the reader's organisation reads them. */
+export const celsius = (value: Value, digits = 0): string =>
+  readersUnit() === 'imperial'
+    ? quantity(known(value) ? value * 1.8 + 32 : null, '°F', digits)
+    : quantity(value, '°C', digits);
 export const decibelMilliwatts = (value: Value): string => quantity(value, 'dBm');
 export const irradiance = (value: Value): string => quantity(value, 'W/m²');
 /** Money in a currency of ISO 4217: whole units from a hundred up, smaller sums with their parts. */

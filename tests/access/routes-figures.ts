@@ -2,7 +2,7 @@ import { get, type Route } from './route';
 
 const NOBODY = '00000000-0000-4000-8000-000000000000';
 
-/** Routes of energy, yields and prices. */
+/** Routes of energy, yields and prices, and of an organisation's settings. */
 export const FIGURES: readonly Route[] = [
   get('figures.astro', 'figures.read', 'nothing', () => '/figures'),
   get('api/figures.csv.ts', 'figures.read', 'nothing', () => '/api/figures.csv?period=2026-10'),
@@ -45,5 +45,43 @@ export const FIGURES: readonly Route[] = [
     of: 'site',
     path: (t) => `/api/sites/${t.site}/tariffs/${NOBODY}`,
     served: [404],
+  },
+  // settings
+  get('settings.astro', 'settings.read', 'nothing', () => '/settings'),
+  {
+    file: 'api/settings/organisation.ts',
+    method: 'PUT',
+    permission: 'settings.write',
+    of: 'nothing',
+    path: () => '/api/settings/organisation',
+    body: { name: '' },
+    served: [422],
+  },
+  {
+    file: 'api/settings/thresholds.ts',
+    method: 'PUT',
+    permission: 'settings.write',
+    of: 'nothing',
+    path: () => '/api/settings/thresholds',
+    body: { lowOutputLoss: 'much' },
+    served: [422],
+  },
+  get('api/settings/logo.ts', 'own_account.use', 'nothing', () => '/api/settings/logo', [404]),
+  {
+    file: 'api/settings/logo.ts',
+    method: 'POST',
+    permission: 'settings.write',
+    of: 'nothing',
+    path: () => '/api/settings/logo',
+    body: 'no picture',
+    served: [422],
+  },
+  {
+    file: 'api/settings/logo.ts',
+    method: 'DELETE',
+    permission: 'settings.write',
+    of: 'nothing',
+    path: () => '/api/settings/logo',
+    served: [200],
   },
 ];

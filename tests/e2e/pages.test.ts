@@ -279,6 +279,7 @@ const PAGES: readonly Shown[] = [
   { name: 'the phone without a site', role: null, path: () => '/capture', file: 'capture/index.astro' },
   { name: 'people', role: 'manager', path: () => '/people', file: 'people.astro' },
   { name: 'who did what', role: 'manager', path: () => '/audit', file: 'audit.astro' },
+  { name: 'settings', role: 'manager', path: () => '/settings', file: 'settings.astro' },
   { name: 'figures', role: 'analyst', path: () => '/figures', file: 'figures.astro' },
   {
     name: 'figures of a site',

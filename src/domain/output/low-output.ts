@@ -42,14 +42,15 @@ const NINETY = 1.645;
 /**
  * Judges string `index` of a plane over its last five days with enough sun, three of which must be low: among at least
  * five siblings by the modified z-score of each day's ratio (by that day's spread, or by that of all days), otherwise against the model with a wide band.
- * Days before `untilDay` (exclusive) count.
+ * Days before `untilDay` (exclusive) count. `lossMin` (share) and `daysLow` (of five) may be set by an organisation.
  */
 export function judgeOutput(
   plane: PlaneSeries,
   reference: PlaneReference,
   index: number,
-  options: { untilDay?: number; pricePerKWh?: number } = {},
+  options: { untilDay?: number; pricePerKWh?: number; lossMin?: number; daysLow?: number } = {},
 ): OutputFinding {
+  const { lossMin = LOSS_MIN, daysLow = DAYS_LOW } = options;
   const s = plane.strings[index]!;
   const ratio = reference.ratio[index]!;
   const z = reference.z[index]!;
@@ -65,7 +66,7 @@ export function judgeOutput(
     : s.ownBaseline === null
       ? MODEL_SD.fresh
       : MODEL_SD.withPast;
-  const limit = bySiblings ? 1 - LOSS_MIN : usual - Math.max(LOSS_MIN, Z_LIMIT * sd);
+  const limit = bySiblings ? 1 - lossMin : usual - Math.max(lossMin, Z_LIMIT * sd);
   const isOut = (d: number): boolean =>
     z[d]! < -Z_LIMIT || (z[d]! < -Z_LIMIT_OF_DAY && ratio[d]! - 1 < -Z_LIMIT * reference.spread);
   const isLow = (d: number): boolean => ratio[d]! < limit && (!bySiblings || isOut(d));
@@ -82,21 +83,21 @@ export function judgeOutput(
       z: bySiblings ? -Z_LIMIT : null,
       ratio: limit,
       source: bySiblings
-        ? 'modified z-score of −3.5 (Iglewicz & Hoaglin 1993) and 5 % (IEC 62446-1), on 3 of 5 days'
-        : 'model: 3.5 standard deviations of what is usual, on 3 of 5 days',
+        ? `modified z-score of −3.5 (Iglewicz & Hoaglin 1993) and ${Math.round(lossMin * 100)} % (${lossMin === LOSS_MIN ? 'IEC 62446-1' : 'set by the organisation'}), on ${daysLow} of 5 days`
+        : `model: 3.5 standard deviations of what is usual, on ${daysLow} of 5 days`,
     },
     excluded: countExcluded(plane, s),
   };
   const none = { loss: null, lossKWh: null, lossMoney: null, signature: null };
-  if (looked.length < DAYS_LOW)
+  if (looked.length < daysLow)
     return {
       ...base,
       ...none,
       outcome: 'cant_tell',
-      words: `${s.name}: ${looked.length} days with enough sun left to compare, ${DAYS_LOW} are needed`,
+      words: `${s.name}: ${looked.length} days with enough sun left to compare, ${daysLow} are needed`,
       confidence: 0,
     };
-  if (low.length < DAYS_LOW)
+  if (low.length < daysLow)
     return {
       ...base,
       ...none,
@@ -104,7 +105,7 @@ export function judgeOutput(
       words:
         low.length === 0
           ? `${s.name} makes what it should`
-          : `${s.name} was low on ${low.length} of ${looked.length} days; ${DAYS_LOW} make a finding`,
+          : `${s.name} was low on ${low.length} of ${looked.length} days; ${daysLow} make a finding`,
       confidence: low.length === 0 ? 0.95 : 0.8,
     };
 

@@ -285,8 +285,18 @@ export const DEVIATIONS = 2.4;
  * Compares a fit with the string's own past, else with at least five like strings, else with its cables. Long cables are
  * told from a bad connector by growth and by siblings only: against the cables alone the threshold is doubled.
  */
-export function judgeLoop(fit: LoopFit | string, against: LoopComparison): LoopFinding {
-  const threshold = { ohm: EXCESS_OHM, source: 'P = I²R: 10 W in one place at 10 A, from experience' };
+export function judgeLoop(
+  fit: LoopFit | string,
+  against: LoopComparison,
+  excessOhm = EXCESS_OHM,
+): LoopFinding {
+  const threshold = {
+    ohm: excessOhm,
+    source:
+      excessOhm === EXCESS_OHM
+        ? 'P = I²R: 10 W in one place at 10 A, from experience'
+        : 'P = I²R; set by the organisation',
+  };
   if (typeof fit === 'string')
     return {
       outcome: 'cant_tell',
@@ -307,7 +317,7 @@ export function judgeLoop(fit: LoopFit | string, against: LoopComparison): LoopF
     : bySiblings
       ? 1.96 * sigmaMad(against.siblingsOhm)
       : 0.3 * against.cableOhm;
-  const limit = byPast || bySiblings ? EXCESS_OHM : 2 * EXCESS_OHM;
+  const limit = byPast || bySiblings ? excessOhm : 2 * excessOhm;
   const wide = Math.hypot(half, referenceHalf);
   const growth = against.siblingsGrowthOhm ?? [];
   const common = byPast && growth.length >= SIBLINGS_MIN ? median(growth) : 0;

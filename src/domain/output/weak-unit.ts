@@ -44,7 +44,7 @@ export const MOSTLY = 0.7;
 const SOMETIMES = 0.15;
 
 /** Units that are weak, by position. Empty: none, or too few quarters under load to say (see `enoughToTell`). */
-export function weakUnits(input: UnitVoltages): WeakUnit[] {
+export function weakUnits(input: UnitVoltages, lossMin = LOSS_MIN): WeakUnit[] {
   const { voltage, current, bypassGroups } = input;
   const quarters: number[] = [];
   for (let q = 0; q < current.length; q++) if (current[q]! >= CURRENT_MIN) quarters.push(q);
@@ -55,7 +55,7 @@ export function weakUnits(input: UnitVoltages): WeakUnit[] {
   );
   const middle = ratios.map((r) => (r.length === 0 ? 1 : median(r)));
   const spread = Math.max(0.004, sigmaMad(middle));
-  const limit = 1 - Math.max(LOSS_MIN, DEVIATIONS * spread);
+  const limit = 1 - Math.max(lossMin, DEVIATIONS * spread);
   const group = 1 / bypassGroups;
   const typicalV = median(typical);
   const diode = 0.5 / Math.max(1, typicalV);

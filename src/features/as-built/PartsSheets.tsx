@@ -9,7 +9,7 @@ import {
   STRUCTURES,
   type PartKind,
 } from '../../domain/commissioning/as-built/parts';
-import { counted, power, quantity } from '../../drawings/numbers';
+import { celsius, counted, power } from '../../drawings/numbers';
 import type { AsBuilt } from '../../schemas/api/as-built';
 import { nameOf } from '../../schemas/as-built-values';
 import { paths } from '../../schemas/paths';
@@ -222,8 +222,8 @@ export function SiteSheets({ built, mayWrite, onEdit }: Omit<Props, 'onToken'>) 
             {choice(RULE_SETS, site.ruleSet)}; {choice(STRUCTURES, site.structure).toLowerCase()}
           </Fact>
           <Fact name="Air, coldest and hottest">
-            {site.temperatureMin === null ? 'not entered' : quantity(site.temperatureMin, '°C')},{' '}
-            {site.temperatureMax === null ? 'not entered' : quantity(site.temperatureMax, '°C')}
+            {site.temperatureMin === null ? 'not entered' : celsius(site.temperatureMin)},{' '}
+            {site.temperatureMax === null ? 'not entered' : celsius(site.temperatureMax)}
           </Fact>
           <Fact name="Shutdown switch">{site.shutdownSwitchPlace || 'place not entered'}</Fact>
           <Fact name="Contact">

@@ -150,12 +150,16 @@ export function RoofPage({ initial }: { initial: CustomerSite }) {
       )}
       <div className="grid gap-4">
         <TodaySheet today={roof.today} at={roof.now.at} timeZone={site.timeZone} />
-        <div className="grid gap-4 sm:grid-cols-3">
+        <div className={`grid gap-4 ${roof.worth ? 'sm:grid-cols-3' : 'sm:grid-cols-2 lg:grid-cols-4'}`}>
           <FigureSheet card={monthCard(roof.month)} />
           <FigureSheet card={yearCard(roof.year, roof.life)} />
           <FigureSheet card={lifeCard(roof.life)} />
           <FigureSheet card={workingTimeCard(roof.life)} />
-          {roof.worth && <FigureSheet card={worthCard(roof.worth)} />}
+          {roof.worth && (
+            <div className="sm:col-span-2">
+              <FigureSheet card={worthCard(roof.worth)} />
+            </div>
+          )}
         </div>
         <div className="grid gap-4 sm:grid-cols-2">
           <Sheet id="shutdown" title="Rapid shutdown">

@@ -16,6 +16,8 @@ export const AUDIT_AREAS = [
   'handover',
   'hazard',
   'history',
+  'settings',
+  'tariff',
 ] as const;
 
 export const auditView = z.object({

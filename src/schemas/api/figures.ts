@@ -63,6 +63,8 @@ export interface SiteFigures {
   compared: Compared | null;
   worth: Money | null;
   currency: string | null;
+  /** Share of the data below which a day is marked. */
+  incompleteBelow: number;
   days: DayFigures[];
   steps: LossStep[] | null;
   losses: {

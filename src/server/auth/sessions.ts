@@ -102,6 +102,7 @@ export async function signedInBy(cookieHeader: string): Promise<SignedIn | { coo
         role: person.role as Role,
         organisationName: person.organisationName,
         timeZone: person.timeZone,
+        units: person.units,
         theme: person.theme as Theme,
         unread: person.unread,
         hazards: person.hazards,

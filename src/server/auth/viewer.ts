@@ -13,6 +13,8 @@ export interface Viewer {
   organisationName: string;
   /** Of the organisation: for times that belong to no site. */
   timeZone: string;
+  /** How temperatures are read. */
+  units: 'metric' | 'imperial';
   theme: Theme;
   /** Notices not read yet, at most a hundred. */
   unread: number;

@@ -10,6 +10,7 @@ import {
   type StringContext,
 } from '../../domain/verdicts/context';
 import { UNCHANGED, type JudgeOutcome } from '../../domain/verdicts/evidence';
+import { thresholdsOf } from '../../domain/settings/thresholds';
 import { judgeFrame, sweepString } from '../../domain/verdicts/judge';
 import type { JudgedFrame } from '../../domain/verdicts/observe';
 import {
@@ -147,7 +148,7 @@ export class SiteJudge {
     const behaviour = site.behaviours.get(string.unitTypeId);
     if (!behaviour) throw new Error(`unit type ${string.unitTypeId} of string ${string.id} is missing`);
     const { timeLimitS, source } = timeLimitOf(site.ruleSet);
-    const { STUCK_GRACE_S } = config();
+    const graceS = config().STUCK_GRACE_S ?? thresholdsOf(site.thresholds).stuckGraceS;
     const times = judgementTimes(site.reportIntervalS, timeLimitS);
     const transmitters = string.transmitterIds.flatMap((id) => {
       const t = site.transmitters.get(id);
@@ -155,7 +156,7 @@ export class SiteJudge {
     });
     return {
       behaviour,
-      times: STUCK_GRACE_S === undefined ? times : { ...times, graceS: STUCK_GRACE_S },
+      times: graceS === null ? times : { ...times, graceS },
       timeLimitSource: source,
       slots: string.serials.map((serial) => serial !== null),
       heardAtS: string.heardAtS,

@@ -4,6 +4,7 @@ import {
   fitLoop,
   judgeLoop,
   type LoopFinding,
+  type LoopComparison,
   type LoopFit,
   type LoopSample,
 } from '../../domain/output/resistance';
@@ -34,6 +35,7 @@ export async function fitLoops(
   site: SeriesSite,
   series: NightSeries,
   planes: readonly { reference: PlaneReference; index: number; members: readonly OutputString[] }[],
+  excessOhm: number,
 ): Promise<LoopJudged[]> {
   const last = series.days.length - 1;
   const sunny = series.days.map((_, d) => {
@@ -63,7 +65,7 @@ export async function fitLoops(
       const f = fits.get(o.string.id);
       return f === undefined || typeof f === 'string' ? [] : [[f, o.string.id]];
     });
-    const finding = judgeLoop(fit, {
+    const against: LoopComparison = {
       past,
       siblingsOhm: known.map(([f]) => f.ohm),
       siblingsGrowthOhm: known.flatMap(([f, id]) => {
@@ -71,7 +73,8 @@ export async function fitLoops(
         return before ? [f.ohm - before.ohm] : [];
       }),
       cableOhm: string.cableOhm + LEAD_OHM * (string.slots + 1),
-    });
+    };
+    const finding = judgeLoop(fit, against, excessOhm);
     const found = finding.outcome === 'excess' || finding.outcome === 'growing';
     const ohm = finding.above?.ohm ?? 0;
     const lossWhDay =

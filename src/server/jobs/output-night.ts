@@ -5,6 +5,7 @@ import { planeReference, type PlaneReference } from '../../domain/output/plane-r
 import { median } from '../../domain/output/robust';
 import { isWell, lastingWeakUnits, type WeakDay } from '../../domain/output/weak-days';
 import { enoughToTell, weakUnits, type UnitVoltages } from '../../domain/output/weak-unit';
+import { thresholdsOf, type Thresholds } from '../../domain/settings/thresholds';
 import { asIngest, type Tx } from '../db/transaction';
 import { addLosses, lockCauses, storedCauses, type CauseRow } from '../queries/causes-stored';
 import { tellSiteChanged } from '../queries/live-notices';
@@ -59,12 +60,13 @@ export async function judgeNight(siteId: number, day: string, at: Date): Promise
     ownBaselines(tx, siteId, series.days[Math.max(0, d - FRESH_DAYS)] ?? day),
   );
   const usual = new Map(baselines.map((b) => [b.stringId, b.ratio]));
-  const low = series.planes.flatMap((plane) => judgePlane(plane, series, usual));
-  const loops = await fitLoops(site, series, low);
+  const limits = thresholdsOf(site.thresholds);
+  const low = series.planes.flatMap((plane) => judgePlane(plane, series, usual, limits));
+  const loops = await fitLoops(site, series, low, limits.loopExcessOhm);
   const dayHours = ((series.boundsS[d + 1] ?? 0) - (series.boundsS[d] ?? 0)) / 3600;
   const dayEnd = new Date((series.boundsS[d + 1] ?? 0) * 1000);
   const membership = await asIngest((tx) => membershipAt(tx, siteId, dayHours, dayEnd));
-  const weak = series.strings.map((n) => ({ n, days: weakDays(n.string, series, n) }));
+  const weak = series.strings.map((n) => ({ n, days: weakDays(n.string, series, n, limits) }));
 
   return asIngest(async (tx) => {
     const locked = await lockCauses(tx, siteId);
@@ -110,13 +112,21 @@ export async function judgeNight(siteId: number, day: string, at: Date): Promise
   });
 }
 
-function judgePlane(plane: NightPlane, series: NightSeries, usual: ReadonlyMap<number, number>): LowJudged[] {
+function judgePlane(
+  plane: NightPlane,
+  series: NightSeries,
+  usual: ReadonlyMap<number, number>,
+  limits: Thresholds,
+): LowJudged[] {
   plane.series.strings.forEach((s, k) => {
     s.ownBaseline = usual.get(plane.members[k]?.[0]?.id ?? 0) ?? null;
   });
   const reference = planeReference(plane.series);
   return plane.series.strings.map((s, index): LowJudged => {
-    const finding = judgeOutput(plane.series, reference, index);
+    const finding = judgeOutput(plane.series, reference, index, {
+      lossMin: limits.lowOutputLoss,
+      daysLow: limits.lowOutputDays,
+    });
     const made = finding.days.filter((x) => x.low).map((x) => x.ratio);
     const expects = finding.loss === null ? 1 : finding.loss.share + (made.length > 0 ? median(made) : 1);
     return {
@@ -172,7 +182,12 @@ function isExplained(l: LowJudged, open: readonly CauseRow[], weak: readonly Fou
 }
 
 /** What each of the last days says of a string's units. */
-function weakDays(s: OutputString, series: NightSeries, n: NightSeries['strings'][number]): WeakDay[] {
+function weakDays(
+  s: OutputString,
+  series: NightSeries,
+  n: NightSeries['strings'][number],
+  limits: Thresholds,
+): WeakDay[] {
   const columns = n.voltageIn ?? (s.kind === 'optimizing' || s.measures === 'input' ? null : n.voltage);
   const columnsIn = s.measures === 'input' ? n.voltage : columns;
   if (columnsIn === null) return [];
@@ -193,7 +208,7 @@ function weakDays(s: OutputString, series: NightSeries, n: NightSeries['strings'
       current: sound,
       bypassGroups: s.bypassGroups,
     };
-    return enoughToTell(input) ? weakUnits(input) : null;
+    return enoughToTell(input) ? weakUnits(input, limits.weakUnitLoss) : null;
   });
 }
 

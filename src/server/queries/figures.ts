@@ -141,6 +141,7 @@ export interface FiguresSiteRow {
   today: string;
   nameplate: number | null; // W
   currency: string | null;
+  thresholds: unknown;
   organisation: string;
 }
 
@@ -152,7 +153,7 @@ export async function figuresSites(tx: Tx, at: Date, ref?: string): Promise<Figu
             (cast(:at as timestamptz) at time zone site.time_zone)::date::text as today,
             (select sum(m.vmp_ref::float8 * m.imp_ref) from slot join module_type m on m.id = slot.module_type_id
               where slot.site_id = site.id) as nameplate,
-            o.currency, o.name as organisation
+            o.currency, o.thresholds, o.name as organisation
      from site join organisation o on o.id = site.organisation_id
      where ${SITE_VISIBLE} and (cast(:ref as uuid) is null or site.ref = cast(:ref as uuid)) order by site.name`,
     { at, ref: ref ?? null },

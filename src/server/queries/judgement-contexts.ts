@@ -32,6 +32,8 @@ export interface JudgedSite {
   stage: 'commissioning' | 'operating';
   ruleSet: RuleSet;
   reportIntervalS: number;
+  /** As kept with the organisation: domain/settings/thresholds reads it. */
+  thresholds: unknown;
   behaviours: Map<number, UnitBehaviour>;
   zones: Map<number, CommandPoint[]>;
   transmitters: Map<number, { zoneId: number; own: CommandPoint[] }>;
@@ -46,7 +48,9 @@ export async function judgedSite(db: Knex, siteId: number): Promise<JudgedSite |
     rows: Omit<JudgedSite, 'behaviours' | 'zones' | 'transmitters' | 'strings'>[];
   }>(
     `select id, organisation_id as "organisationId", latitude, longitude, altitude, stage, rule_set as "ruleSet",
-       report_interval_s as "reportIntervalS" from site where id = ?`,
+       report_interval_s as "reportIntervalS",
+       (select o.thresholds from organisation o where o.id = site.organisation_id) as thresholds
+     from site where id = ?`,
     [siteId],
   );
   const site = sites.rows[0];

@@ -12,6 +12,8 @@ export async function seriesSite(
       longitude: number;
       altitude: number;
       reportIntervalS: number;
+      /** As kept with the organisation: domain/settings/thresholds reads it. */
+      thresholds: unknown;
       judged: boolean;
     }
   | undefined
@@ -23,10 +25,13 @@ export async function seriesSite(
       longitude: number;
       altitude: number;
       reportIntervalS: number;
+      /** As kept with the organisation: domain/settings/thresholds reads it. */
+      thresholds: unknown;
       judged: boolean;
     }[];
   }>(
     `select s.id, s.latitude, s.longitude, s.altitude, s.report_interval_s as "reportIntervalS",
+            (select o.thresholds from organisation o where o.id = s.organisation_id) as thresholds,
             exists (select from output_night n where n.site_id = s.id and n.day = :day) as judged
      from site s where s.id = :siteId`,
     { siteId, day },

@@ -6,6 +6,8 @@ export interface PersonRow {
   organisationId: number;
   organisationName: string;
   timeZone: string;
+  /** How the organisation reads temperatures. */
+  units: 'metric' | 'imperial';
   email: string;
   name: string;
   role: string;
@@ -26,7 +28,7 @@ export async function personOfSession(personId: number, sessionHash: string): Pr
       `with used as (
          update session set used_at = now() where id = ? and used_at < now() - interval '5 minutes' returning user_id),
        here as (update person set last_seen_at = now() where id in (select user_id from used))
-       select p.id, p.ref, p.organisation_id as "organisationId", o.name as "organisationName", o.time_zone as "timeZone", p.email, p.name, p.role, p.theme,
+       select p.id, p.ref, p.organisation_id as "organisationId", o.name as "organisationName", o.time_zone as "timeZone", o.units, p.email, p.name, p.role, p.theme,
               coalesce((select array_agg(site_id) from site_access a where a.person_id = p.id), '{}') as sites,
               n.unread, n.hazards
        from person p join organisation o on o.id = p.organisation_id

@@ -1,6 +1,7 @@
 import { figuresOf, lossSteps, type DaySums } from '../../domain/output/day-figures';
 import { dayAfter, elapsedOf, periodOf, yearBefore, type Period } from '../../domain/output/period';
 import { worthOf } from '../../domain/output/tariff';
+import { thresholdsOf } from '../../domain/settings/thresholds';
 import { LOSS_WORDS } from '../../domain/output/loss-words';
 import type { Actor } from '../../domain/access/permissions';
 import type { z } from 'zod';
@@ -115,6 +116,7 @@ export async function siteFigures(
       tariffs,
     ),
     currency: site.currency,
+    incompleteBelow: thresholdsOf(site.thresholds).incompleteBelow,
     days: sums.map((d) => ({ day: d.day, figures: figuresOf([d], 1, annual) })),
     steps: lossSteps(
       sums,

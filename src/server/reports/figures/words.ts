@@ -186,7 +186,7 @@ export function calendarDays(f: SiteFigures): CalendarDay[] {
       continue;
     }
     const odd = [
-      d.completeness < 0.9 && key !== f.today ? `${percent(d.completeness)} of the data` : '',
+      d.completeness < f.incompleteBelow && key !== f.today ? `${percent(d.completeness)} of the data` : '',
       d.lostMinutes > 0 ? `${hoursWords(d.lostMinutes)} of light lost` : '',
     ].filter(Boolean);
     const words = [

@@ -1,0 +1,116 @@
+import { useState } from 'react';
+import { Button } from '../../components/ui/Button';
+import { Choice } from '../../components/ui/Choice';
+import { Field } from '../../components/ui/Field';
+import { Sheet } from '../../components/ui/Sheet';
+import { api } from '../../lib/api';
+import { CURRENCIES, type OrganisationSettings } from '../../schemas/api/settings';
+import { paths } from '../../schemas/paths';
+import { Saved } from './Saved';
+import { useSaving } from './use-saving';
+
+interface Props {
+  settings: OrganisationSettings;
+  mayWrite: boolean;
+  onSaved: (settings: OrganisationSettings) => void;
+}
+
+/** Name, how to reach it, its clock, its money, its units, and how long raw readings are shown. */
+export function OrganisationSheet({ settings, mayWrite, onSaved }: Props) {
+  const [name, setName] = useState(settings.name);
+  const [phone, setPhone] = useState(settings.phone);
+  const [timeZone, setTimeZone] = useState(settings.timeZone);
+  const [currency, setCurrency] = useState(settings.currency ?? '');
+  const [units, setUnits] = useState(settings.units);
+  const [hide, setHide] = useState(
+    settings.hideRawAfterDays === null ? '' : String(settings.hideRawAfterDays),
+  );
+  const { busy, kept, fault, save, error } = useSaving(onSaved);
+  return (
+    <Sheet id="organisation" title="Organisation">
+      <form
+        onSubmit={(event) => {
+          event.preventDefault();
+          void save(() =>
+            api<OrganisationSettings>(paths.api.settingsOrganisation(), {
+              method: 'PUT',
+              body: {
+                name,
+                phone,
+                timeZone,
+                currency: currency === '' ? null : currency,
+                units,
+                hideRawAfterDays: hide.trim() === '' ? null : Number(hide),
+              },
+            }),
+          );
+        }}
+      >
+        <fieldset disabled={!mayWrite || busy} className="grid gap-x-6 gap-y-4 sm:grid-cols-2">
+          <legend className="sr-only">Organisation</legend>
+          <Field
+            label="Name"
+            value={name}
+            onChange={(e) => setName(e.target.value)}
+            error={error('name')}
+            required
+          />
+          <Field
+            label="Telephone"
+            type="tel"
+            value={phone}
+            onChange={(e) => setPhone(e.target.value)}
+            error={error('phone')}
+            hint="Stands on your customers’ pages and letters."
+          />
+          <Choice
+            label="Time zone"
+            value={timeZone}
+            onChange={setTimeZone}
+            options={settings.timeZones.map((zone) => ({ value: zone, label: zone.replaceAll('_', ' ') }))}
+            hint="For times that belong to no site. Each site keeps its own."
+            error={error('timeZone')}
+          />
+          <Choice
+            label="Money"
+            value={currency}
+            onChange={setCurrency}
+            options={[
+              { value: '', label: 'none: no money is shown' },
+              ...CURRENCIES.map((code) => ({ value: code, label: code })),
+            ]}
+            hint="Prices a kWh are set on each site’s figures."
+            error={error('currency')}
+          />
+          <Choice
+            label="Temperatures"
+            value={units}
+            onChange={(wanted) => setUnits(wanted === 'imperial' ? 'imperial' : 'metric')}
+            options={[
+              { value: 'metric', label: 'in °C' },
+              { value: 'imperial', label: 'in °F' },
+            ]}
+            hint="What is read. Data sheets and files keep °C."
+            error={error('units')}
+          />
+          <Field
+            label="Raw readings are shown for"
+            inputMode="numeric"
+            unit="days"
+            value={hide}
+            placeholder="90"
+            onChange={(e) => setHide(e.target.value)}
+            error={error('hideRawAfterDays')}
+            hint="Empty: as long as the installation keeps them, 90 days. Sums of quarters and days stay."
+          />
+        </fieldset>
+        {mayWrite && (
+          <Button type="submit" weight="primary" disabled={busy} className="mt-4">
+            {busy ? 'Saving' : 'Save'}
+          </Button>
+        )}
+        <Saved kept={kept} fault={fault} />
+      </form>
+    </Sheet>
+  );
+}
