@@ -30,7 +30,7 @@ describe('the words of a notice', () => {
     const detail = { cause: 'x', hazard: true, headline: 'Two units did not shut down' };
     expect(words(event('cause_opened', detail))).toEqual({
       headline: 'Two units did not shut down',
-      body: 'Treat as live: B3 (positions 4 and 9) and B4, with the home run and everything up to the inverter.',
+      body: 'Treat as live: all of B3 and B4, with the home run and everything up to the inverter.',
     });
     const over = words(event('cause_closed', detail));
     expect(over.headline).toBe('Over: Two units did not shut down');

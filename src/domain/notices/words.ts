@@ -33,8 +33,9 @@ export function stringsInWords(units: CauseWords['units']): string {
 
 /** What to treat as live while something does not shut down. */
 export function liveWords(units: CauseWords['units']): string {
-  const where = stringsInWords(units);
-  return `Treat as live: ${where ? `${where}, with the home run and everything up to the inverter` : 'every string of the site'}.`;
+  // one unit that passes makes its whole string live
+  const where = stringsInWords(units.map(({ stringName }) => ({ stringName, position: null })));
+  return `Treat as live: ${where ? `all of ${where}, with the home run and everything up to the inverter` : 'every string of the site'}.`;
 }
 
 const OVER = 'It has stayed away for half an hour.';

@@ -10,6 +10,8 @@ export interface LetterParts {
   paragraphs: readonly string[];
   /** A safety caution: its first words stand out. */
   caution?: { strong: string; rest: string };
+  /** Whom to call: a number that a phone dials. */
+  call?: { words: string; number: string };
   /** The drawing that is sent along, by its content id, and what it shows. */
   picture?: { cid: string; width: number; alt: string };
   /** What the reader may do next, with a full address. */
@@ -51,6 +53,7 @@ function textOf(parts: LetterParts): string {
     ...(finding ? [parts.hazard ? `NOT SHUTTING DOWN: ${finding}` : finding] : []),
     greeting,
     ...paragraphs,
+    ...(parts.call ? [`${parts.call.words}: ${parts.call.number}`] : []),
     ...(caution ? [`! ${caution.strong} ${caution.rest}`] : []),
     ...(figures.length > 0 ? [figures.map(([name, value]) => `${name}: ${value}`).join('\n')] : []),
     ...(picture ? [`[Drawing: ${picture.alt}]`] : []),
@@ -101,6 +104,9 @@ export function letter(parts: LetterParts): { text: string; html: string } {
   const hello = finding
     ? p(greeting)
     : p(greeting, `margin:0 0 16px;font:600 18px/24px ${FONT};color:${INK}`);
+  const dial = parts.call
+    ? `<p style="margin:0 0 20px"><a href="tel:${escapeHtml(parts.call.number.replaceAll(/[^+\d]/g, ''))}" style="display:inline-block;border:1px solid ${INK};color:${INK};font:600 16px/24px ${FONT};text-decoration:none;padding:9px 18px;border-radius:4px">${escapeHtml(`${parts.call.words}: ${parts.call.number}`)}</a></p>`
+    : '';
   const warns = caution
     ? `<p style="margin:0 0 20px;padding:12px 16px;background:${INK};color:#e8eef0;font:15px/22px ${FONT};border-radius:3px"><span style="color:${CAUTION}">&#9888;</span> <strong style="color:#ffffff">${escapeHtml(caution.strong)}</strong> ${escapeHtml(caution.rest)}</p>`
     : '';
@@ -118,6 +124,6 @@ export function letter(parts: LetterParts): { text: string; html: string } {
   const out = wayOut
     ? `<p style="${small}"><a href="${escapeHtml(wayOut.href)}" style="color:${PETROL};text-decoration:underline">${escapeHtml(wayOut.words)}</a></p>`
     : '';
-  const html = `<!doctype html><html lang="en"><head><meta charset="utf-8"><meta name="viewport" content="width=device-width, initial-scale=1"><meta name="color-scheme" content="light"><title>${escapeHtml(finding ?? 'Wakeline')}</title></head><body style="margin:0;background:${FILM}"><div style="max-width:560px;margin:0 auto;padding:20px 12px 32px"><div style="background:#ffffff;border-top:2px solid ${INK};border-bottom:1px solid ${RULE};padding:24px">${head}${title}${hello}${paragraphs.map((words) => p(words)).join('')}${warns}${table}${drawing}${sections.map(sectionHtml).join('')}${button}</div>${p(footer, small)}${out}</div></body></html>`;
+  const html = `<!doctype html><html lang="en"><head><meta charset="utf-8"><meta name="viewport" content="width=device-width, initial-scale=1"><meta name="color-scheme" content="light"><title>${escapeHtml(finding ?? 'Wakeline')}</title></head><body style="margin:0;background:${FILM}"><div style="max-width:560px;margin:0 auto;padding:20px 12px 32px"><div style="background:#ffffff;border-top:2px solid ${INK};border-bottom:1px solid ${RULE};padding:24px">${head}${title}${hello}${paragraphs.map((words) => p(words)).join('')}${dial}${warns}${table}${drawing}${sections.map(sectionHtml).join('')}${button}</div>${p(footer, small)}${out}</div></body></html>`;
   return { text: textOf(parts), html };
 }

@@ -115,6 +115,15 @@ export async function eventsAfter(
   return rows.map(toEvent);
 }
 
+/** Whether events are committed that wait for a running transaction. */
+export async function waitsBeyond(tx: Tx, below: string, kinds: readonly EventKind[]): Promise<boolean> {
+  const { rows } = await tx.raw<{ rows: { waits: boolean }[] }>(
+    `select exists (select from event where xid >= ?::text::xid8 and kind = any (?::text[])) as waits`,
+    [below, [...kinds]],
+  );
+  return rows[0]?.waits ?? false;
+}
+
 /** Hazards that are committed but wait for a running transaction: they are told ahead of their turn. */
 export async function hazardsAhead(tx: Tx, after: Cursor): Promise<TellEvent[]> {
   const { rows } = await tx.raw<{ rows: EventRow[] }>(

@@ -78,14 +78,19 @@ export interface GatheredLine {
   currency: string | null;
 }
 
-/** Persons whose gathered letter is due, some at a time; their lines are held until the transaction ends. */
+/** The space of our advisory locks by person. */
+const GATHERED_LOCK = 7_001;
+
+/** A person whose gathered letter is due, with its lines; held until the transaction ends. */
 export async function dueLetters(
   tx: Tx,
   now: Date,
 ): Promise<{ personId: number; lines: GatheredLine[] } | undefined> {
+  // one process a person: locked by number, since lines locked one after the other by two would wait for each other
   const { rows: first } = await tx.raw<{ rows: { personId: number }[] }>(
-    `select person_id as "personId" from notice where letter_due <= ? and lettered_at is null
-     order by letter_due, id limit 1 for update skip locked`,
+    `select due.person_id as "personId" from (
+       select distinct person_id from notice where letter_due <= ? and lettered_at is null order by 1 limit 100) due
+     where pg_try_advisory_xact_lock(${GATHERED_LOCK}, due.person_id) limit 1`,
     [now],
   );
   const personId = first[0]?.personId;
@@ -102,7 +107,7 @@ export async function dueLetters(
      left join site on site.id = n.site_id
      left join cause c on n.subject = 'cause:' || c.ref
      where n.person_id = :personId and n.lettered_at is null and n.letter_due <= :now
-     order by n.id for update of n`,
+     order by n.id`,
     { personId, now },
   );
   return { personId, lines };

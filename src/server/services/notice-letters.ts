@@ -1,7 +1,7 @@
 import { createHash } from 'node:crypto';
 import { adviceFor } from '../../domain/notices/advice';
 import { KINDS } from '../../domain/notices/kinds';
-import { stringsInWords } from '../../domain/notices/words';
+import { liveWords, stringsInWords } from '../../domain/notices/words';
 import { energy } from '../../drawings/numbers';
 import { fullTime } from '../../drawings/times';
 import { paths } from '../../schemas/paths';
@@ -58,7 +58,51 @@ export interface Telling {
   words: { headline: string; body: string };
   cause: CauseFacts | null;
   href: string;
+  /** Each of several that one letter tells of. */
+  each?: readonly Telling[];
 }
+
+/** Several of one kind at one site as one: what they share above, each below. */
+export function together(tellings: readonly Telling[]): Telling | undefined {
+  const [first] = tellings;
+  if (!first || tellings.length === 1) return first;
+  const causes = tellings.flatMap((t) => t.cause ?? []);
+  const units = causes.flatMap((c) => c.units);
+  const hazard = first.told.kind === 'hazard';
+  return {
+    ...first,
+    words: {
+      headline: `${first.words.headline}, and ${tellings.length - 1} more`,
+      body: hazard ? liveWords(units) : 'Found at the same moment:',
+    },
+    cause: first.cause && {
+      ...first.cause,
+      units,
+      stringIds: [...new Set(causes.flatMap((c) => c.stringIds))],
+      evidence: '',
+      lossWhDay: causes.reduce((sum, c) => sum + (c.lossWhDay ?? 0), 0) || null,
+    },
+    href: hazard ? paths.shutdown() : paths.site(first.event.site.ref),
+    each: tellings,
+  };
+}
+
+/** Each of several, with the way to its page. */
+const eachOf = ({ each = [] }: Telling): Pick<LetterParts, 'sections'> =>
+  each.length === 0
+    ? {}
+    : {
+        sections: [
+          {
+            title: 'Each',
+            items: each.map((t) => ({
+              title: t.words.headline,
+              lines: t.cause?.evidence ? [t.cause.evidence] : t.words.body ? [t.words.body] : [],
+              href: publicUrl() + t.href,
+            })),
+          },
+        ],
+      };
 
 const CAUTION = {
   strong: 'Shutdown is not isolation.',
@@ -81,6 +125,7 @@ function callWhom({ event }: Telling, person: RecipientRow): [string, string][] 
 function hazardParts(telling: Telling, person: RecipientRow): LetterParts {
   const { words, cause, event, told } = telling;
   const over = told.phase === 'goes';
+  const number = event.site.contactPhone || person.organisationPhone;
   const zone = person.timeZone;
   const figures: [string, string][] = [
     ['Site', event.site.name],
@@ -99,10 +144,11 @@ function hazardParts(telling: Telling, person: RecipientRow): LetterParts {
       ...(over
         ? []
         : [
-            `Call the site now: ${event.site.contactPhone || person.organisationPhone || 'the number is not entered in Wakeline'}. Nobody works on these strings until a licensed person has isolated them and proved them dead.`,
+            `Call the site now${number ? '' : ': its number is not entered in Wakeline'}. Nobody works on these strings until a licensed person has isolated them and proved them dead.`,
           ]),
       ...(cause?.evidence && !over ? [cause.evidence] : []),
     ],
+    ...(number && !over && { call: { words: 'Call the site', number } }),
     caution: CAUTION,
     figures,
     action: {
@@ -166,6 +212,7 @@ export async function writeLetter(
   const { text, html } = letter({
     ...parts,
     ...drawn(picture),
+    ...eachOf(telling),
     footer: `${parts.footer} ${choicesLine()}`,
     ...(out && { wayOut: out.wayOut }),
   });

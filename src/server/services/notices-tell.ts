@@ -19,6 +19,7 @@ import {
   saveSubject,
   somethingToTell,
   subjectStates,
+  waitsBeyond,
   type CauseFacts,
   type RecipientRow,
   type TellEvent,
@@ -26,7 +27,7 @@ import {
 import { addNotice, markCameBack, markOver, tellNoticed } from '../queries/notices-write';
 import { hrefOf } from './notice-links';
 import { recipientOf } from './notice-people';
-import { pictureOf, writeLetter, type KeptPicture } from './notice-letters';
+import { pictureOf, together, writeLetter, type KeptPicture, type Telling } from './notice-letters';
 import { addCalls } from './webhook-calls';
 
 /**
@@ -55,6 +56,8 @@ interface Scene {
   people: RecipientRow[];
   states: Map<string, SubjectState>;
   pictures: Map<string, KeptPicture | null>;
+  /** Letters of this round, by whom they go to and what they are about. */
+  letters: Map<string, { person: RecipientRow; tellings: Telling[] }>;
 }
 interface ToTell {
   told: Told;
@@ -90,18 +93,15 @@ export function tellRound(now: Date): Promise<Round> {
     for (const { subject } of due) toTell.push(...(await settle(tx, scene, subject, waited)));
     const count = { events: events.length, notices: 0, letters: 0 };
     const noticed = new Set<number>();
-    for (const one of toTell) {
-      const done = await tellEverybody(tx, scene, one, noticed);
-      count.notices += done.notices;
-      count.letters += done.letters;
-    }
+    for (const one of toTell) count.notices += await tellEverybody(tx, scene, one, noticed);
+    count.letters = await writeLetters(tx, scene);
     const calls = await addCalls(tx, all, scene.causes);
     const more = events.length === EVENTS_A_ROUND;
     const last = events.at(-1);
     if (more && last) await moveReader(tx, READER, { xid: last.xid, id: String(last.id) });
     else if (BigInt(below) > BigInt(cursor.xid)) await moveReader(tx, READER, { xid: below, id: '0' });
     await tellNoticed(tx, noticed);
-    return { ...count, calls, more, held: pending && events.length + due.length === 0 };
+    return { ...count, calls, more, held: await waitsBeyond(tx, below, TOLD_EVENTS) };
   });
 }
 
@@ -117,6 +117,7 @@ async function sceneOf(tx: Tx, events: readonly TellEvent[], now: Date): Promise
     people: await recipients(tx, { organisationIds: [...new Set(events.map((e) => e.organisationId))] }),
     states: await subjectStates(tx, [...new Set(told.flatMap((t) => t.subject ?? []))]),
     pictures: new Map(),
+    letters: new Map(),
   };
 }
 
@@ -197,17 +198,12 @@ function doerOf({ event }: ToTell, people: readonly RecipientRow[]): number | nu
   return named.length === 1 ? (named[0]?.personId ?? null) : null;
 }
 
-async function tellEverybody(
-  tx: Tx,
-  scene: Scene,
-  one: ToTell,
-  noticed: Set<number>,
-): Promise<{ notices: number; letters: number }> {
+async function tellEverybody(tx: Tx, scene: Scene, one: ToTell, noticed: Set<number>): Promise<number> {
   const { told, event } = one;
   const cause = causeOf(scene, event);
   const words = noticeWords(told, event, cause);
   const byPerson = doerOf(one, scene.people);
-  const count = { notices: 0, letters: 0 };
+  let notices = 0;
   for (const person of addressees(one, scene)) {
     const decision = decide(
       { kind: told.kind, siteId: event.siteId, byPerson, inProductOnly: told.inProductOnly },
@@ -234,27 +230,40 @@ async function tellEverybody(
       letterDue: decision.how === 'gathered' ? decision.at : null,
     });
     if (!isNew) continue;
-    count.notices++;
+    notices++;
     noticed.add(person.personId);
     if (decision.how !== 'now') continue;
-    const picture = await pictureFor(tx, scene, event, told.phase === 'comes' ? cause : null);
-    if (await writeLetter(tx, { told, event, words, cause, href }, person, eventKey, picture))
-      count.letters++;
+    // several of one kind at one site, found at the same moment, are one letter
+    const key = told.phase === 'comes' ? `${told.kind}:${event.siteId}` : `event:${event.id}`;
+    const letter = scene.letters.get(`${person.personId}:${key}`) ?? { person, tellings: [] };
+    letter.tellings.push({ told, event, words, cause, href });
+    scene.letters.set(`${person.personId}:${key}`, letter);
   }
-  return count;
+  return notices;
 }
 
-/** One drawing a cause and round, however many letters carry it. */
+async function writeLetters(tx: Tx, scene: Scene): Promise<number> {
+  let letters = 0;
+  for (const { person, tellings } of scene.letters.values()) {
+    const telling = together(tellings);
+    if (!telling) continue;
+    const picture = await pictureFor(tx, scene, telling);
+    if (await writeLetter(tx, telling, person, `event:${telling.event.id}`, picture)) letters++;
+  }
+  return letters;
+}
+
+/** One drawing of the same strings a round, however many letters carry it. */
 async function pictureFor(
   tx: Tx,
   scene: Scene,
-  event: TellEvent,
-  cause: CauseFacts | null,
+  { told, event, cause }: Telling,
 ): Promise<KeptPicture | null> {
-  if (!cause) return null;
-  const known = scene.pictures.get(cause.ref);
+  if (!cause || told.phase !== 'comes') return null;
+  const key = [...cause.stringIds].sort((a, b) => a - b).join(',');
+  const known = scene.pictures.get(key);
   if (known !== undefined) return known;
   const made = await pictureOf(tx, event.organisationId, cause.stringIds, scene.now);
-  scene.pictures.set(cause.ref, made);
+  scene.pictures.set(key, made);
   return made;
 }
