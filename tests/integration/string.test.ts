@@ -170,9 +170,9 @@ describe('the history of a string', () => {
     const from = Math.floor(minutesAgo(120).getTime() / 1000);
     const h = await history('B3', `range=day&from=${from}&to=${Math.floor(NOW.getTime() / 1000) + 60}`);
     expect(h.resolution).toBe('minute');
-    expect(h.voltage.filter((v) => v !== null)).toHaveLength(121 - 19);
-    expect(h.voltage.filter((v) => v === null)).toHaveLength(1);
-    expect(h.voltage.at(-1)).toBeCloseTo(12 * 39 - 1, 3);
+    expect(h.values.filter((v) => v !== null)).toHaveLength(121 - 19);
+    expect(h.values.filter((v) => v === null)).toHaveLength(1);
+    expect(h.values.at(-1)).toBeCloseTo(12 * 39 - 1, 3);
     const low = h.expected.low.at(-1) ?? 0;
     const high = h.expected.high.at(-1) ?? 0;
     expect(low).toBeLessThan(14 * 39);

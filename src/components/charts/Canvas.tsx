@@ -12,11 +12,11 @@ import {
 import * as echarts from 'echarts/core';
 import type { ECharts } from 'echarts/core';
 import { CanvasRenderer } from 'echarts/renderers';
-import { useEffect, useMemo, useRef, useState } from 'react';
+import { useCallback, useEffect, useMemo, useRef, useState, type PointerEvent } from 'react';
 import { onThemeChange, readColours } from './colours';
-import { fromWall } from './local-time';
+import { fromWall, toWall } from './local-time';
 import type { ChartModel } from './model';
-import { chartOptions } from './options';
+import { chartOptions, gridOf } from './options';
 
 echarts.use([
   LineChart,
@@ -41,6 +41,10 @@ interface Props {
   onReady: (chart: ECharts) => void;
   /** After the person has zoomed, a moment later; null: the whole is in sight. */
   onZoom: (span: Span | null) => void;
+  /** A moment marked in the plot, epoch s. */
+  moment?: number | null;
+  /** The person drags or taps a moment; `done` when they let go. */
+  onMoment?: (at: number, done: boolean) => void;
 }
 
 const REST_MS = 250;
@@ -57,34 +61,105 @@ function spanInSight(chart: ECharts, timeZone: string): Span | null {
 }
 
 /** The canvas itself: loaded when a chart nears the screen. */
-export default function Canvas({ model, height, width, onReady, onZoom }: Props) {
+export default function Canvas({ model, height, width, onReady, onZoom, moment = null, onMoment }: Props) {
   const [colours, setColours] = useState(readColours);
   useEffect(() => onThemeChange(() => requestAnimationFrame(() => setColours(readColours()))), []);
+  const draggable = onMoment !== undefined;
   const option = useMemo(
-    () => chartOptions(model, colours, { width, height }),
-    [model, colours, width, height],
+    () => chartOptions(model, colours, { width, height }, draggable),
+    [model, colours, width, height, draggable],
   );
   const rest = useRef<ReturnType<typeof setTimeout>>(undefined);
+  const chart = useRef<ECharts | null>(null);
+  const dragging = useRef(false);
+  // before its first picture the chart knows no axis to ask
+  const drawn = useRef(false);
+  const [momentPx, setMomentPx] = useState<number | null>(null);
+  const { from, to, timeZone } = model;
+  const place = useCallback(() => {
+    const instance = chart.current;
+    if (!instance || instance.isDisposed() || !drawn.current || moment === null) return setMomentPx(null);
+    const x = instance.convertToPixel({ xAxisIndex: 0 }, toWall(moment, timeZone));
+    const grid = gridOf(width);
+    setMomentPx(x >= grid.left - 1 && x <= instance.getWidth() - grid.right + 1 ? x : null);
+  }, [moment, timeZone, width]);
+  useEffect(place, [place, option]);
   const events = useMemo(
     () => ({
-      datazoom: (_: unknown, chart: ECharts) => {
+      datazoom: (_: unknown, instance: ECharts) => {
+        place();
         clearTimeout(rest.current);
         rest.current = setTimeout(() => {
-          if (!chart.isDisposed()) onZoom(spanInSight(chart, model.timeZone));
+          if (!instance.isDisposed()) onZoom(spanInSight(instance, timeZone));
         }, REST_MS);
       },
+      finished: () => {
+        drawn.current = true;
+        place();
+      },
     }),
-    [onZoom, model.timeZone],
+    [onZoom, timeZone, place],
   );
+  const ready = useCallback(
+    (instance: ECharts) => {
+      chart.current = instance;
+      onReady(instance);
+    },
+    [onReady],
+  );
+  const said = (event: PointerEvent<HTMLDivElement>, done: boolean) => {
+    const instance = chart.current;
+    if (!instance || !onMoment || !drawn.current) return;
+    const x = event.clientX - event.currentTarget.getBoundingClientRect().left;
+    const at = fromWall(instance.convertFromPixel({ xAxisIndex: 0 }, x), timeZone);
+    onMoment(Math.min(to, Math.max(from, at)), done);
+  };
+  const inPlot = (event: PointerEvent<HTMLDivElement>): boolean => {
+    const box = event.currentTarget.getBoundingClientRect();
+    const grid = gridOf(width);
+    const [x, y] = [event.clientX - box.left, event.clientY - box.top];
+    return x >= grid.left && x <= box.width - grid.right && y >= grid.top && y <= height - grid.bottom;
+  };
   return (
-    <EChartsReactCore
-      echarts={echarts}
-      option={option}
-      replaceMerge={['series']}
-      lazyUpdate
-      style={{ height, width: '100%' }}
-      onChartReady={onReady}
-      onEvents={events}
-    />
+    <div
+      className="relative"
+      style={draggable ? { touchAction: 'pan-y', cursor: 'col-resize' } : undefined}
+      onPointerDown={(event) => {
+        if (!draggable || event.button !== 0 || !inPlot(event)) return;
+        dragging.current = true;
+        said(event, false);
+      }}
+      onPointerMove={(event) => {
+        if (dragging.current) said(event, false);
+      }}
+      onPointerUp={(event) => {
+        if (dragging.current) said(event, true);
+        dragging.current = false;
+      }}
+      onPointerLeave={(event) => {
+        if (dragging.current) said(event, true);
+        dragging.current = false;
+      }}
+      onPointerCancel={() => (dragging.current = false)}
+    >
+      <EChartsReactCore
+        echarts={echarts}
+        option={option}
+        replaceMerge={['series']}
+        lazyUpdate
+        style={{ height, width: '100%' }}
+        onChartReady={ready}
+        onEvents={events}
+      />
+      {momentPx !== null && (
+        <span
+          aria-hidden="true"
+          className="pointer-events-none absolute w-0.5 -translate-x-1/2 bg-ink"
+          style={{ left: momentPx, top: gridOf(width).top - 8, bottom: gridOf(width).bottom }}
+        >
+          <span className="absolute -top-1 left-1/2 h-2.5 w-2.5 -translate-x-1/2 rotate-45 bg-ink" />
+        </span>
+      )}
+    </div>
   );
 }

@@ -1,18 +1,11 @@
 import type { ECharts } from 'echarts/core';
-import {
-  lazy,
-  Suspense,
-  useCallback,
-  useEffect,
-  useRef,
-  useState,
-  type KeyboardEvent,
-  type ReactNode,
-} from 'react';
+import { lazy, Suspense, useCallback, useRef, useState, type KeyboardEvent, type ReactNode } from 'react';
 import type { Span } from './Canvas';
 import { ChartSketch } from './ChartSketch';
 import { ChartTable } from './ChartTable';
+import { saveCsv } from './chart-csv';
 import { toWall } from './local-time';
+import { useNear, useWidth } from './near';
 import type { ChartModel } from './model';
 import { picture } from './picture';
 import { readout } from './options';
@@ -22,7 +15,7 @@ const Canvas = lazy(() => import('./Canvas'));
 interface Props {
   model: ChartModel;
   height?: number;
-  /** Where the same data comes as CSV. */
+  /** Where the same data comes as CSV; without it the CSV is made here, of what is drawn. */
   csvHref?: string;
   /** Name of the picture, without ending. */
   fileName: string;
@@ -30,37 +23,10 @@ interface Props {
   onZoom?: (span: Span | null) => void;
   /** Controls at the left of the chart's own. */
   controls?: ReactNode;
-}
-
-/** True once the element is within a screen's height of the window. */
-function useNear(ref: { current: HTMLElement | null }): boolean {
-  const [near, setNear] = useState(false);
-  useEffect(() => {
-    const element = ref.current;
-    if (!element || near) return;
-    const watch = new IntersectionObserver(
-      (entries) => entries.some((e) => e.isIntersecting) && setNear(true),
-      {
-        rootMargin: '100% 0px',
-      },
-    );
-    watch.observe(element);
-    return () => watch.disconnect();
-  }, [ref, near]);
-  return near;
-}
-
-/** Width of the element, px, in steps that matter to a layout. */
-function useWidth(ref: { current: HTMLElement | null }): number {
-  const [width, setWidth] = useState(0);
-  useEffect(() => {
-    const element = ref.current;
-    if (!element) return;
-    const watch = new ResizeObserver(() => setWidth(Math.round(element.clientWidth / 20) * 20));
-    watch.observe(element);
-    return () => watch.disconnect();
-  }, [ref]);
-  return width;
+  /** A moment marked in the plot, epoch s. */
+  moment?: number | null;
+  /** Somebody drags, taps or (Enter) chooses a moment; `done` when they let go. */
+  onMoment?: (at: number, done: boolean) => void;
 }
 
 const TOOL =
@@ -68,9 +34,18 @@ const TOOL =
 
 /**
  * The one chart over time: crosshair with a readout, zoom, gaps as gaps, nights, expected band, marks, the figures as a
- * table, PNG and CSV. Keys while it has the focus: t table, ← → crosshair, + − 0 zoom.
+ * table, PNG and CSV. Keys while it has the focus: t table, ← → crosshair, Enter its moment, + − 0 zoom.
  */
-export function TimeChart({ model, height = 300, csvHref, fileName, onZoom, controls }: Props) {
+export function TimeChart({
+  model,
+  height = 300,
+  csvHref,
+  fileName,
+  onZoom,
+  controls,
+  moment = null,
+  onMoment,
+}: Props) {
   const figure = useRef<HTMLElement>(null);
   const chart = useRef<ECharts | null>(null);
   const [asTable, setAsTable] = useState(false);
@@ -108,6 +83,10 @@ export function TimeChart({ model, height = 300, csvHref, fileName, onZoom, cont
       `${r.title}: ${r.rows.map(([name, value]) => `${name} ${value}`).join(', ')}. ${r.marks.join('. ')}`,
     );
   };
+  const chooseMoment = () => {
+    const at = cursor.current === null ? undefined : model.lines[0]?.at[cursor.current];
+    if (at !== undefined) onMoment?.(at, true);
+  };
   const onKeyDown = (event: KeyboardEvent) => {
     if (event.target instanceof HTMLElement && event.target.matches('input, select, textarea')) return;
     if (event.ctrlKey || event.metaKey || event.altKey) return;
@@ -120,6 +99,7 @@ export function TimeChart({ model, height = 300, csvHref, fileName, onZoom, cont
       '+': () => zoomBy(0.5),
       '-': () => zoomBy(2),
       '0': () => zoomBy(null),
+      ...(onMoment && event.target === event.currentTarget ? { Enter: chooseMoment } : {}),
     };
     const step = steps[event.key];
     if (!step || (asTable && event.key !== 't')) return;
@@ -141,7 +121,7 @@ export function TimeChart({ model, height = 300, csvHref, fileName, onZoom, cont
     <figure
       ref={figure}
       tabIndex={0}
-      aria-label={`${model.title}. Press t for the figures as a table, left and right for single values.`}
+      aria-label={`${model.title}. Press t for the figures as a table, left and right for single values${onMoment ? ', Enter for the staircase of that moment' : ''}.`}
       onKeyDown={onKeyDown}
       className="bg-sheet"
     >
@@ -169,10 +149,14 @@ export function TimeChart({ model, height = 300, csvHref, fileName, onZoom, cont
               PNG
             </button>
           )}
-          {csvHref && (
+          {csvHref ? (
             <a href={csvHref} download className={`inline-flex items-center ${TOOL}`}>
               CSV
             </a>
+          ) : (
+            <button type="button" className={TOOL} onClick={() => saveCsv(model, fileName)}>
+              CSV
+            </button>
           )}
         </div>
       </div>
@@ -182,7 +166,15 @@ export function TimeChart({ model, height = 300, csvHref, fileName, onZoom, cont
           <ChartTable model={model} height={height} />
         ) : near && width > 0 ? (
           <Suspense fallback={<ChartSketch model={model} height={height} />}>
-            <Canvas model={model} height={height} width={width} onReady={ready} onZoom={zoomed} />
+            <Canvas
+              model={model}
+              height={height}
+              width={width}
+              onReady={ready}
+              onZoom={zoomed}
+              moment={moment}
+              onMoment={onMoment}
+            />
           </Suspense>
         ) : (
           <ChartSketch model={model} height={height} />

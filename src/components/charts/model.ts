@@ -9,6 +9,8 @@ export interface ChartLine {
   tone: ChartTone;
   /** Thin and pale: one of many. */
   quiet?: boolean;
+  /** Not measured here, or laid over from elsewhere. */
+  dashed?: boolean;
 }
 export interface ChartBand {
   name: string;

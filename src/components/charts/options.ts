@@ -7,7 +7,10 @@ import { valueAt, type ChartBand, type ChartLine, type ChartModel } from './mode
 
 /** A span so short that its ticks lie seconds apart. */
 const MINUTES_S = 600;
-const GRID = { top: 30, bottom: 62 } as const;
+/** px around the plot. */
+export const GRID = { top: 30, bottom: 62 } as const;
+export const gridOf = (width: number): { top: number; bottom: number; left: number; right: number } =>
+  width < 520 ? { ...GRID, left: 42, right: 8 } : { ...GRID, left: 54, right: 16 };
 const FAMILY = '"Inter Tight Variable", system-ui, sans-serif';
 
 const escaped = (text: string): string =>
@@ -94,7 +97,12 @@ function lineSeries(line: ChartLine, model: ChartModel, c: Colours) {
     sampling: 'lttb',
     z: line.quiet ? 3 : 4,
     itemStyle: { color: c[line.tone] },
-    lineStyle: { color: c[line.tone], width: line.quiet ? 1 : 2, opacity: line.quiet ? 0.45 : 1 },
+    lineStyle: {
+      color: c[line.tone],
+      width: line.quiet ? 1 : 2,
+      opacity: line.quiet ? 0.45 : 1,
+      ...(line.dashed && { type: [5, 4] }),
+    },
     emphasis: { disabled: true },
   };
 }
@@ -150,6 +158,15 @@ export function labelsOf(model: ChartModel, plotPx: number, plotHeight: number):
   return labels;
 }
 
+/** The ground of a stretch: what was commanded, what was planned, what somebody noted. */
+const GROUND = {
+  plum: 'plum-wash',
+  slate: 'slate-wash',
+  petrol: 'petrol-wash',
+  rust: 'slate-wash',
+  crimson: 'slate-wash',
+} as const;
+
 function grounds(model: ChartModel, c: Colours, labels: readonly Label[]) {
   const x = (at: number) => toWall(at, model.timeZone);
   return {
@@ -172,7 +189,7 @@ function grounds(model: ChartModel, c: Colours, labels: readonly Label[]) {
             ? []
             : [
                 [
-                  { xAxis: x(m.from), itemStyle: { color: c['plum-wash'], opacity: 0.9 } },
+                  { xAxis: x(m.from), itemStyle: { color: c[GROUND[m.tone]], opacity: 0.9 } },
                   { xAxis: x(m.to) },
                 ],
               ],
@@ -238,9 +255,11 @@ export function chartOptions(
   model: ChartModel,
   c: Colours,
   size: { width: number; height: number },
+  /** Dragging in the plot moves something else than the part in sight. */
+  dragTaken = false,
 ): EChartsCoreOption {
   const narrow = size.width < 520;
-  const grid = { ...GRID, left: narrow ? 42 : 54, right: narrow ? 8 : 16 };
+  const grid = gridOf(size.width);
   const labels = narrow
     ? []
     : labelsOf(model, size.width - grid.left - grid.right, size.height - grid.top - grid.bottom);
@@ -329,7 +348,15 @@ export function chartOptions(
       },
       ...(narrow
         ? []
-        : [{ type: 'inside', zoomOnMouseWheel: 'ctrl', moveOnMouseWheel: false, filterMode: 'none' }]),
+        : [
+            {
+              type: 'inside',
+              zoomOnMouseWheel: 'ctrl',
+              moveOnMouseMove: !dragTaken,
+              moveOnMouseWheel: false,
+              filterMode: 'none',
+            },
+          ]),
     ],
     series: [
       grounds(model, c, labels),

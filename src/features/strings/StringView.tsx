@@ -1,33 +1,45 @@
 import { QueryClientProvider, useQuery, useQueryClient } from '@tanstack/react-query';
-import { useState } from 'react';
+import { lazy, useCallback, useMemo, useState } from 'react';
+import type { ChartMark } from '../../components/charts/model';
 import { ButtonLink } from '../../components/ui/Button';
 import { Caution } from '../../components/ui/Caution';
 import { Heading } from '../../components/ui/Heading';
 import { LiveMark } from '../../components/ui/Live';
 import { NotRead } from '../../components/ui/NotRead';
 import { energy } from '../../drawings/numbers';
-import { clock } from '../../drawings/times';
+import { clock, localDay } from '../../drawings/times';
 import { TraceSheet } from '../../components/trace/TraceSheet';
 import { Sheet } from '../../components/ui/Sheet';
 import { withQuery } from '../../lib/api';
 import { useLive } from '../../lib/live-hook';
 import { queryClient } from '../../lib/query-client';
+import { useViewInUrl } from '../../lib/view-in-url';
 import type { StringHistory, StringPage } from '../../schemas/api/string';
+import { UNITS_CHOSEN_MOST, type WorkbenchView } from '../../schemas/api/workbench';
 import { paths } from '../../schemas/paths';
 import { cautionOf, nextSteps, readingsOf } from './advice';
+import { CopyLink } from './CopyLink';
 import { EventsSheet } from './EventsSheet';
 import { HistorySheet } from './HistorySheet';
 import { NextStrings } from './NextStrings';
 import { ReadingsSheet } from './ReadingsSheet';
 import { StaircaseSheet } from './StaircaseSheet';
-import { UnitsSheet } from './UnitsSheet';
 import { UnitTable } from './UnitTable';
-import { stringQuery } from './queries';
+import { notesQuery, stringQuery } from './queries';
+import { chosenUnits, DEFAULTS, permanentAddress, unitsInAddress } from './view';
+import { WhenNear } from './WhenNear';
 import { findingOf, type Sentence } from './words';
+
+const UnitsSheet = lazy(() => import('./UnitsSheet'));
+const HeatSheet = lazy(() => import('./HeatSheet'));
+const LoopSheet = lazy(() => import('./LoopSheet'));
+const ExplanationsSheet = lazy(() => import('./ExplanationsSheet'));
+const NotesSheet = lazy(() => import('./NotesSheet'));
 
 interface Props {
   page: StringPage;
   history: StringHistory;
+  view: WorkbenchView;
 }
 
 function Words({ sentence }: { sentence: Sentence }) {
@@ -64,15 +76,62 @@ function useStringLive(initial: StringPage) {
   return { page: result.data, failed: result.isRefetchError ? result.error : null, status };
 }
 
-function Page({ page: initial, history }: Props) {
+/** The notes as marks on the time axis. */
+function useNoteMarks(page: StringPage): ChartMark[] {
+  const notes = useQuery(notesQuery(page.site.id, page.string.id));
+  return useMemo(
+    () =>
+      (notes.data ?? []).map((note): ChartMark => ({
+        from: Date.parse(note.from) / 1000,
+        to: note.to === null ? null : Date.parse(note.to) / 1000,
+        words: `Note: ${note.text}`,
+        tone: 'petrol',
+      })),
+    [notes.data],
+  );
+}
+
+/** The moment of the staircase: in the address once it is let go, here while it is dragged. */
+function useMoment(view: WorkbenchView, setView: (some: Partial<WorkbenchView>) => void) {
+  const [dragged, setDragged] = useState<number | null>(null);
+  const moment = dragged ?? (view.at === '' ? null : Number(view.at));
+  const onMoment = useCallback(
+    (at: number | null, done: boolean) => {
+      const minute = at === null ? null : Math.floor(at / 60) * 60;
+      setDragged(done ? null : minute);
+      if (done && (minute === null ? '' : String(minute)) !== view.at)
+        setView({ at: minute === null ? '' : String(minute) });
+    },
+    [view.at, setView],
+  );
+  return { moment, onMoment };
+}
+
+function Page({ page: initial, history, view: initialView }: Props) {
   const { page, failed, status } = useStringLive(initial);
-  const [chosen, setChosen] = useState<ReadonlySet<number> | null>(null);
+  const [view, setView] = useViewInUrl(initialView, DEFAULTS);
+  const { moment, onMoment } = useMoment(view, setView);
+  const notes = useNoteMarks(page);
   const { string, site } = page;
   const when = { now: page.at, timeZone: site.timeZone };
+  const nowS = Math.floor(new Date(page.at).getTime() / 1000);
   const finding = findingOf(string, when);
   const readings = readingsOf(page, finding);
   const steps = nextSteps(page, finding);
   const caution = cautionOf(finding);
+  const told = string.kind !== 'shutdown_only';
+  const chosen = useMemo(() => chosenUnits(view, string.slots), [view, string.slots]);
+  const address = () =>
+    permanentAddress(paths.string(site.id, string.id), view, {
+      day: localDay(page.at, site.timeZone),
+      atS: nowS,
+      units: chosen,
+    });
+  const chooseCell = (at: number, position: number) => {
+    const units =
+      chosen.includes(position) || chosen.length >= UNITS_CHOSEN_MOST ? chosen : [...chosen, position];
+    setView({ at: String(at), units: unitsInAddress(units) });
+  };
   return (
     <>
       <Heading
@@ -83,7 +142,21 @@ function Page({ page: initial, history }: Props) {
         ]}
         finding={finding.heading}
         sentence={<Words sentence={finding.sentence} />}
-        actions={<NextStrings page={page} />}
+        actions={
+          <>
+            <NextStrings page={page} />
+            <CopyLink address={address} />
+            {page.openCase ? (
+              <ButtonLink weight="primary" href={paths.caseFile(page.openCase.id)}>
+                Case {page.openCase.number}
+              </ButtonLink>
+            ) : (
+              <ButtonLink weight="primary" href={paths.caseNew({ string: string.id })}>
+                Open a case
+              </ButtonLink>
+            )}
+          </>
+        }
       />
       <div className="-mt-3 mb-3 flex flex-col gap-2 empty:hidden">
         <LiveMark
@@ -95,53 +168,98 @@ function Page({ page: initial, history }: Props) {
       <p className="sr-only" role="status">
         {finding.heading}
       </p>
-      <div className="grid gap-5 lg:grid-cols-[minmax(0,1fr)_minmax(280px,28%)]">
-        <div className="flex min-w-0 flex-col gap-5">
-          <StaircaseSheet page={page} />
-          <div className="lg:hidden">
-            <Caution strong={caution.strong}>{caution.rest}</Caution>
+      {/* on a phone one column, what the readings say first */}
+      <div className="flex flex-col gap-5 lg:grid lg:grid-cols-[minmax(0,1fr)_minmax(280px,28%)]">
+        <div className="contents lg:flex lg:min-w-0 lg:flex-col lg:gap-5">
+          <div className="order-2 min-w-0 lg:order-none">
+            <StaircaseSheet page={page} moment={moment} onNow={() => onMoment(null, true)} />
           </div>
-          <HistorySheet
-            id={string.id}
-            subject={`${site.name}, string ${string.name}`}
-            initial={history}
-            today={page.at}
-          />
-          <TraceSheet siteId={site.id} stringId={string.id} timeZone={site.timeZone} />
+          <div className="order-5 min-w-0 lg:order-none">
+            <HistorySheet
+              page={page}
+              view={view}
+              onView={setView}
+              initial={history}
+              initialView={initialView}
+              notes={notes}
+              moment={moment}
+              onMoment={onMoment}
+            />
+          </div>
+          <div className="order-6 min-w-0 lg:order-none">
+            <WhenNear height={420}>
+              <ExplanationsSheet page={page} view={view} />
+            </WhenNear>
+          </div>
         </div>
-        <div className="flex min-w-0 flex-col gap-5">
-          {readings.main && <ReadingsSheet readings={readings} />}
-          {steps.length > 0 && (
-            <Sheet title="Do next" id="next">
-              <ol className="list-decimal space-y-1.5 pl-5 text-[15px] leading-[22px]">
-                {steps.map((step) => (
-                  <li key={step}>{step}</li>
-                ))}
-              </ol>
-              <p className="no-print mt-3">
-                <ButtonLink href={withQuery(paths.walk(site.id), { string: string.name })}>
-                  Walk and ladder card
-                </ButtonLink>
-              </p>
-            </Sheet>
+        <div className="contents lg:flex lg:min-w-0 lg:flex-col lg:gap-5">
+          {readings.main && (
+            <div className="order-1 min-w-0 lg:order-none">
+              <ReadingsSheet readings={readings} />
+            </div>
           )}
-          <div className="hidden lg:block">
+          {steps.length > 0 && (
+            <div className="order-4 min-w-0 lg:order-none">
+              <Sheet title="Do next" id="next">
+                <ol className="list-decimal space-y-1.5 pl-5 text-[15px] leading-[22px]">
+                  {steps.map((step) => (
+                    <li key={step}>{step}</li>
+                  ))}
+                </ol>
+                <p className="no-print mt-3">
+                  <ButtonLink href={withQuery(paths.walk(site.id), { string: string.name })}>
+                    Walk and ladder card
+                  </ButtonLink>
+                </p>
+              </Sheet>
+            </div>
+          )}
+          <div className="order-3 min-w-0 lg:order-none">
             <Caution strong={caution.strong}>{caution.rest}</Caution>
           </div>
           {page.lostToday && (
-            <Sheet title="Lost here today" id="lost">
-              <p className="text-[28px] font-semibold leading-8 tracking-[-0.02em]">
-                {energy(page.lostToday.wh)}
-              </p>
-              <p className="mt-2 text-sm text-ink-2">
-                since {clock(page.lostToday.since, site.timeZone)}, against {page.lostToday.against}
-              </p>
-            </Sheet>
+            <div className="order-4 min-w-0 lg:order-none">
+              <Sheet title="Lost here today" id="lost">
+                <p className="text-[28px] font-semibold leading-8 tracking-[-0.02em]">
+                  {energy(page.lostToday.wh)}
+                </p>
+                <p className="mt-2 text-sm text-ink-2">
+                  since {clock(page.lostToday.since, site.timeZone)}, against {page.lostToday.against}
+                </p>
+              </Sheet>
+            </div>
           )}
-          <EventsSheet page={page} />
+          <div className="order-7 min-w-0 lg:order-none">
+            <WhenNear height={160}>
+              <NotesSheet page={page} atS={moment ?? nowS} onMoment={(at) => onMoment(at, true)} />
+            </WhenNear>
+          </div>
+          <div className="order-8 min-w-0 lg:order-none">
+            <EventsSheet page={page} />
+          </div>
         </div>
-        <div className="flex min-w-0 flex-col gap-5 lg:col-span-2">
-          {string.kind !== 'shutdown_only' && <UnitsSheet page={page} chosen={chosen} onChoose={setChosen} />}
+        <div className="order-9 flex min-w-0 flex-col gap-5 lg:order-none lg:col-span-2">
+          {told && (
+            <>
+              <WhenNear height={430}>
+                <UnitsSheet
+                  page={page}
+                  view={view}
+                  chosen={chosen}
+                  onView={setView}
+                  moment={moment}
+                  onMoment={onMoment}
+                />
+              </WhenNear>
+              <WhenNear height={400}>
+                <HeatSheet page={page} view={view} onView={setView} moment={moment} onChoose={chooseCell} />
+              </WhenNear>
+              <WhenNear height={480}>
+                <LoopSheet page={page} view={view} />
+              </WhenNear>
+            </>
+          )}
+          <TraceSheet siteId={site.id} stringId={string.id} timeZone={site.timeZone} />
           <UnitTable page={page} />
         </div>
       </div>

@@ -1,13 +1,15 @@
 import { useQuery } from '@tanstack/react-query';
-import { useMemo, useState } from 'react';
+import { useMemo } from 'react';
 import { TimeChart } from '../../components/charts/TimeChart';
-import { Button } from '../../components/ui/Button';
+import { Notice } from '../../components/ui/Notice';
 import { NotRead } from '../../components/ui/NotRead';
 import { Segmented } from '../../components/ui/Segmented';
 import { Sheet } from '../../components/ui/Sheet';
 import type { StringPage, UnitQuantity } from '../../schemas/api/string';
+import { UNITS_CHOSEN_MOST, type WorkbenchView } from '../../schemas/api/workbench';
 import { unitsChart } from './history-model';
 import { unitsCsvHref, unitsQuery, type UnitsView } from './queries';
+import { unitsInAddress } from './view';
 
 const QUANTITIES: readonly { value: UnitQuantity; label: string }[] = [
   { value: 'voltage', label: 'Voltage' },
@@ -18,95 +20,119 @@ const QUANTITIES: readonly { value: UnitQuantity; label: string }[] = [
 
 interface Props {
   page: StringPage;
-  /** Positions that stand out; null: those that are in trouble. */
-  chosen: ReadonlySet<number> | null;
-  onChoose: (chosen: ReadonlySet<number>) => void;
+  view: WorkbenchView;
+  /** Positions whose lines are drawn. */
+  chosen: readonly number[];
+  onView: (some: Partial<WorkbenchView>) => void;
+  moment: number | null;
+  onMoment: (at: number, done: boolean) => void;
 }
 
-/** Every unit's line over today, the chosen ones in front. Fetched when asked for. */
-export function UnitsSheet({ page, chosen, onChoose }: Props) {
+/** Lines of chosen units over the time shown, eight at most. */
+export default function UnitsSheet({ page, view, chosen, onView, moment, onMoment }: Props) {
   const { string } = page;
   const subject = `${page.site.name}, string ${string.name}`;
-  const [open, setOpen] = useState(false);
-  const [view, setView] = useState<UnitsView>({ quantity: 'voltage', on: null });
-  const units = useQuery({ ...unitsQuery(string.id, view), enabled: open });
+  const asked: UnitsView = {
+    quantity: view.unit,
+    range: view.range === 'year' ? 'month' : view.range,
+    on: view.on || null,
+    positions: [...chosen].sort((a, b) => a - b).join(','),
+  };
+  const units = useQuery({ ...unitsQuery(string.id, asked), enabled: chosen.length > 0 });
   const tones = useMemo(
     () =>
       new Map(
         string.slots.flatMap((s): [number, 'rust' | 'crimson'][] =>
-          s.verdict === 'stuck' || s.verdict === 'flapping' || s.verdict === 'late'
-            ? [[s.position, 'rust']]
-            : s.verdict === 'not_shutting_down'
-              ? [[s.position, 'crimson']]
+          s.verdict === 'not_shutting_down'
+            ? [[s.position, 'crimson']]
+            : s.verdict === 'stuck' || s.verdict === 'flapping' || s.verdict === 'late'
+              ? [[s.position, 'rust']]
               : [],
         ),
       ),
     [string.slots],
   );
-  const inFront = useMemo(() => chosen ?? new Set(tones.keys()), [chosen, tones]);
   const model = useMemo(
-    () => (units.data ? unitsChart(units.data, subject, inFront, tones) : null),
-    [units.data, subject, inFront, tones],
+    () => (units.data && chosen.length > 0 ? unitsChart(units.data, subject, tones) : null),
+    [units.data, chosen.length, subject, tones],
   );
   const toggle = (position: number) => {
-    const next = new Set(inFront);
-    if (!next.delete(position)) next.add(position);
-    onChoose(next);
+    const next = chosen.includes(position) ? chosen.filter((p) => p !== position) : [...chosen, position];
+    if (next.length <= UNITS_CHOSEN_MOST) onView({ units: unitsInAddress(next) });
   };
+  const full = chosen.length >= UNITS_CHOSEN_MOST;
   return (
     <Sheet
-      id="units-today"
-      title="Single units, today"
+      id="units-chosen"
+      title="Chosen units"
       aside={
-        open && (
-          <Segmented
-            label="Quantity"
-            options={QUANTITIES}
-            value={view.quantity}
-            onChange={(quantity) => setView({ ...view, quantity })}
-          />
-        )
+        <Segmented
+          label="Quantity of units"
+          options={QUANTITIES}
+          value={view.unit}
+          onChange={(unit) => onView({ unit })}
+        />
       }
     >
-      {!open && (
-        <Button onClick={() => setOpen(true)}>Show the lines of all {string.counts.units} units</Button>
-      )}
+      <fieldset className="mb-2 flex flex-wrap items-center gap-1">
+        <legend className="mb-1 text-sm text-ink-2">
+          Positions, {UNITS_CHOSEN_MOST} at most{full && ': take one out to add another'}
+        </legend>
+        {string.slots
+          .filter((s) => s.serial !== null)
+          .map((s) => {
+            const on = chosen.includes(s.position);
+            return (
+              <label
+                key={s.position}
+                title={s.serial ?? undefined}
+                className={`target inline-flex min-w-[44px] items-center justify-center rounded border px-1.5 text-sm focus-within:outline focus-within:outline-2 focus-within:outline-petrol ${on ? 'border-ink bg-ink text-sheet' : 'border-rule text-ink-2'} ${!on && full ? 'cursor-not-allowed opacity-50' : 'cursor-pointer'}`}
+              >
+                <input
+                  type="checkbox"
+                  className="sr-only"
+                  checked={on}
+                  disabled={!on && full}
+                  onChange={() => toggle(s.position)}
+                />
+                <span className="sr-only">Position </span>
+                {s.position}
+              </label>
+            );
+          })}
+      </fieldset>
       <NotRead
         error={units.error}
         title="The lines could not be fetched"
         kind="failed"
         onRetry={() => units.refetch()}
       />
-      {open && units.isPending && <p role="status">Fetching the day’s reports …</p>}
+      {chosen.length === 0 && (
+        <Notice kind="empty" title="No unit is chosen">
+          Choose positions above, or tap a row of the strip below.
+        </Notice>
+      )}
+      {chosen.length > 0 && units.isPending && <p role="status">Fetching the units’ reports …</p>}
       {model && (
-        <>
-          <fieldset className="mb-2 flex flex-wrap items-center gap-1">
-            <legend className="sr-only">Positions in front</legend>
-            {string.slots
-              .filter((s) => s.serial !== null)
-              .map((s) => (
-                <label
-                  key={s.position}
-                  className={`target inline-flex min-w-[36px] cursor-pointer items-center justify-center rounded border px-1.5 text-sm focus-within:outline focus-within:outline-2 focus-within:outline-petrol ${inFront.has(s.position) ? 'border-ink bg-ink text-sheet' : 'border-rule text-ink-2'}`}
-                >
-                  <input
-                    type="checkbox"
-                    className="sr-only"
-                    checked={inFront.has(s.position)}
-                    onChange={() => toggle(s.position)}
-                  />
-                  <span className="sr-only">Position </span>
-                  {s.position}
-                </label>
-              ))}
-          </fieldset>
+        <div className={units.isPlaceholderData ? 'opacity-60' : ''}>
           <TimeChart
+            key={`${view.unit} ${model.from} ${model.to}`}
             model={model}
             height={320}
-            fileName={`units-${view.quantity}`}
-            csvHref={unitsCsvHref(string.id, view)}
+            fileName={`units-${view.unit}-${view.on || 'today'}`}
+            csvHref={unitsCsvHref(string.id, asked)}
+            moment={moment}
+            onMoment={onMoment}
           />
-        </>
+          <p className="mt-1 text-sm text-ink-2">
+            {units.data?.resolution === 'quarter' &&
+              (view.unit === 'temperature' ? 'Highest of 15 minutes. ' : 'Means of 15 minutes. ')}
+            {view.range === 'year' && 'Single units are kept by quarters of an hour: a month is shown. '}
+            {units.data &&
+              units.data.moves.length > 0 &&
+              'Before a mark the readings of that position are another unit’s.'}
+          </p>
+        </div>
       )}
     </Sheet>
   );

@@ -1,16 +1,39 @@
-import type { ChartModel } from '../../components/charts/model';
+import { fromWall, toWall } from '../../components/charts/local-time';
+import { valueAt, type ChartLine, type ChartMark, type ChartModel } from '../../components/charts/model';
 import type { StringHistory, StringUnits } from '../../schemas/api/string';
 
-const TITLE = {
-  day: 'voltage over a day',
-  week: 'voltage over a week',
-  month: 'voltage over a month',
-  year: 'voltage over a year',
-} as const;
+const RANGE = { day: 'a day', week: 'a week', month: 'a month', year: 'a year' } as const;
+const NAME: Record<StringHistory['quantity'], string> = {
+  voltage: 'Voltage',
+  current: 'Current',
+  power: 'Power',
+};
+const LINE_DIGITS: Record<string, number> = { V: 0, A: 2, W: 0, kWh: 1 };
+
+interface Series {
+  at: readonly number[];
+  values: readonly (number | null)[];
+}
+function spliced(
+  whole: Series,
+  part: Series,
+  span: { from: number; to: number },
+): { at: number[]; values: (number | null)[] } {
+  if (part.at.length === 0) return { at: [...whole.at], values: [...whole.values] };
+  const kept = whole.at.flatMap((at, i) => (at < span.from || at > span.to ? [i] : []));
+  const before = kept.filter((i) => (whole.at[i] ?? 0) < span.from);
+  const after = kept.filter((i) => (whole.at[i] ?? 0) > span.to);
+  const at = (i: number) => whole.at[i] ?? 0;
+  const value = (i: number) => whole.values[i] ?? null;
+  return {
+    at: [...before.map(at), ...part.at, ...after.map(at)],
+    values: [...before.map(value), ...part.values, ...after.map(value)],
+  };
+}
 
 /** Puts the finer part into the whole, in place of what the whole says of that time. */
 export function refined(whole: StringHistory, part: StringHistory | null): StringHistory {
-  if (!part || part.resolution === whole.resolution || part.voltage.every((v) => v === null)) return whole;
+  if (!part || part.resolution === whole.resolution || part.values.every((v) => v === null)) return whole;
   const outside = (at: number) => at < part.from || at > part.to;
   const pick = (values: readonly (number | null)[]) => values.filter((_, i) => outside(whole.at[i] ?? 0));
   const before = whole.at.filter((at) => at < part.from).length;
@@ -30,7 +53,7 @@ export function refined(whole: StringHistory, part: StringHistory | null): Strin
   return {
     ...whole,
     at: insert(whole.at.filter(outside), part.at),
-    voltage: insert(pick(whole.voltage), part.voltage),
+    values: insert(pick(whole.values), part.values),
     low: insert(pick(whole.low), part.low),
     high: insert(pick(whole.high), part.high),
     energy: insert(pick(whole.energy), part.energy),
@@ -40,6 +63,12 @@ export function refined(whole: StringHistory, part: StringHistory | null): Strin
       low: eInsert(eOutside(whole.expected.low), part.expected.low),
       high: eInsert(eOutside(whole.expected.high), part.expected.high),
     },
+    middle: { ...whole.middle, ...spliced(whole.middle, part.middle, part) },
+    imported: spliced(whole.imported, part.imported, part),
+    siblings: whole.siblings.map((line) => {
+      const finer = part.siblings.find((p) => p.id === line.id);
+      return finer ? { ...line, ...spliced(line, finer, part) } : line;
+    }),
     nights: part.nights.length > 0 && whole.nights.length === 0 ? part.nights : whole.nights,
     marks: part.marks.length > whole.marks.length ? part.marks : whole.marks,
   };
@@ -59,27 +88,132 @@ function daylight({ from, to, nights }: Pick<StringHistory, 'from' | 'to' | 'nig
     : { from, to };
 }
 
+/** What is laid over a string's history: another string, or another day of it, moved onto the same hours. */
+export interface Overlay {
+  name: string;
+  history: StringHistory;
+}
+
+/** The overlay's instants on the history's own axis: the same wall clock, whatever the clocks did between. */
+export function laidOver(history: StringHistory, over: StringHistory): number[] {
+  const shift = toWall(history.from, history.timeZone) - toWall(over.from, over.timeZone);
+  if (shift === 0 && history.timeZone === over.timeZone) return over.at;
+  return over.at.map((at) => fromWall(toWall(at, over.timeZone) + shift, history.timeZone));
+}
+
+export interface Shown {
+  /** The middle of the siblings, each of them, or none. */
+  siblings: 'middle' | 'each' | 'off';
+  overlay: Overlay | null;
+  notes: readonly ChartMark[];
+}
+
+function siblingLinesOf(history: StringHistory, shown: Shown): ChartLine[] {
+  if (shown.siblings === 'off') return [];
+  const each = history.siblings.map((s): ChartLine => ({
+    name: s.name,
+    at: s.at,
+    values: s.values,
+    tone: 'petrol',
+    quiet: true,
+  }));
+  if (shown.siblings === 'each') return each;
+  return history.middle.at.length === 0
+    ? []
+    : [
+        {
+          name: 'Siblings, middle',
+          at: history.middle.at,
+          values: history.middle.values,
+          tone: 'petrol',
+          quiet: true,
+        },
+      ];
+}
+
 /** A string's history as a chart. */
-export function historyChart(history: StringHistory, subject: string): ChartModel {
+export function historyChart(
+  history: StringHistory,
+  subject: string,
+  shown: Shown = { siblings: 'off', overlay: null, notes: [] },
+): ChartModel {
   const coarse = history.resolution !== 'minute';
+  const name = history.unit === 'kWh' ? 'Made that day' : NAME[history.quantity];
+  const { overlay } = shown;
+  const peaks = coarse && history.low.some((v, i) => v !== (history.values[i] ?? null));
   return {
-    title: `${subject}: ${TITLE[history.range]}`,
-    unit: 'V',
-    digits: 0,
+    title: `${subject}: ${NAME[history.quantity].toLowerCase()} over ${RANGE[history.range]}`,
+    unit: history.unit,
+    digits: LINE_DIGITS[history.unit] ?? 1,
     timeZone: history.timeZone,
     ...(history.range === 'day' ? daylight(history) : { from: history.from, to: history.to }),
     lines: [
-      { name: coarse ? 'Mean voltage' : 'Voltage', at: history.at, values: history.voltage, tone: 'ink' },
+      {
+        name: coarse && history.unit !== 'kWh' ? `Mean ${name.toLowerCase()}` : name,
+        at: history.at,
+        values: history.values,
+        tone: 'ink',
+      },
+      ...(history.imported.at.length > 0
+        ? [
+            {
+              name: 'Imported',
+              at: history.imported.at,
+              values: history.imported.values,
+              tone: 'slate',
+              dashed: true,
+            } satisfies ChartLine,
+          ]
+        : []),
+      ...(overlay
+        ? [
+            {
+              name: overlay.name,
+              at: laidOver(history, overlay.history),
+              values: overlay.history.values,
+              tone: 'rust',
+              dashed: true,
+            } satisfies ChartLine,
+          ]
+        : []),
+      ...siblingLinesOf(history, shown),
     ],
     band: history.expected.at.length
       ? { name: 'Expected', at: history.expected.at, low: history.expected.low, high: history.expected.high }
       : undefined,
-    spread: coarse
+    spread: peaks
       ? { name: 'Lowest to highest', at: history.at, low: history.low, high: history.high }
       : undefined,
     nights: history.nights,
-    marks: history.marks,
+    marks: [...history.marks, ...shown.notes],
     fromZero: true,
+  };
+}
+
+/** The string less what is laid over it, where both tell within a step of each other. */
+export function differenceChart(history: StringHistory, overlay: Overlay, subject: string): ChartModel {
+  const over = { at: laidOver(history, overlay.history), values: overlay.history.values };
+  const within = { minute: 600, quarter: 900, day: 43_200 }[history.resolution];
+  return {
+    title: `${subject}: less ${overlay.name}`,
+    unit: history.unit,
+    digits: Math.max(1, LINE_DIGITS[history.unit] ?? 1),
+    timeZone: history.timeZone,
+    ...(history.range === 'day' ? daylight(history) : { from: history.from, to: history.to }),
+    lines: [
+      {
+        name: 'Difference',
+        at: history.at,
+        values: history.at.map((at, i) => {
+          const own = history.values[i] ?? null;
+          const other = valueAt(over, at, within);
+          return own === null || other === null ? null : own - other;
+        }),
+        tone: 'rust',
+      },
+    ],
+    nights: history.nights,
+    marks: [],
   };
 }
 
@@ -91,28 +225,47 @@ const QUANTITY = {
 } as const;
 const DIGITS = { voltage: 1, current: 2, temperature: 0, power: 0 } as const;
 
-/** Units over a day as a chart: those chosen stand out, in the colour of their trouble if they have one. */
+const TONES = ['ink', 'petrol', 'plum', 'slate'] as const;
+
+/**
+ * Chosen units over time as a chart. Those in trouble have the colour of it; the others take turns of colour and stroke,
+ * so that eight are told apart. A unit that came or went is marked: what was read before is another's.
+ */
 export function unitsChart(
   units: StringUnits,
   subject: string,
-  chosen: ReadonlySet<number>,
   tones: ReadonlyMap<number, 'rust' | 'crimson'>,
 ): ChartModel {
+  let turn = 0;
   return {
     title: `${subject}: ${QUANTITY[units.quantity]} of single units${units.quantity === 'voltage' && units.side === 'module' ? ', module side' : ''}`,
     unit: units.unit,
     digits: DIGITS[units.quantity],
     timeZone: units.timeZone,
-    ...daylight(units),
-    lines: units.lines.map((line) => ({
-      name: `Position ${line.position}`,
-      at: units.at,
-      values: line.values,
-      tone: chosen.has(line.position) ? (tones.get(line.position) ?? 'ink') : 'petrol',
-      quiet: !chosen.has(line.position),
-    })),
+    ...(units.range === 'day' ? daylight(units) : { from: units.from, to: units.to }),
+    lines: units.lines.map((line) => {
+      const own = tones.get(line.position);
+      const nth = own ? 0 : turn++;
+      return {
+        name: `Position ${line.position}`,
+        at: units.at,
+        values: line.values,
+        tone: own ?? TONES[nth % TONES.length] ?? 'ink',
+        dashed: nth >= TONES.length,
+      };
+    }),
     nights: units.nights,
-    marks: [],
+    marks: units.moves.map((m) => ({
+      from: m.at,
+      to: null,
+      words:
+        m.in === null
+          ? `${m.out ?? 'Unit'} taken out at ${m.position}`
+          : m.out === null
+            ? `${m.in} placed at ${m.position}`
+            : `${m.in} in place of ${m.out} at ${m.position}`,
+      tone: 'slate',
+    })),
     fromZero: units.quantity !== 'temperature' && units.quantity !== 'voltage',
   };
 }

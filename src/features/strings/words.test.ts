@@ -270,6 +270,8 @@ const page = (s: StringNow, evidence: StringPage['evidence']['units'] = []): Str
   lostToday: null,
   neighbours: { previous: null, next: null },
   events: [],
+  siblings: [],
+  openCase: null,
 });
 
 describe('what the readings say and what to do', () => {

@@ -55,6 +55,10 @@ export const stringPage = z.object({
     next: z.object({ id, name: z.string() }).nullable(),
   }),
   events: z.array(eventItem), // newest first
+  /** Strings of the same plane, module type and way of working; none: compared with the model. */
+  siblings: z.array(z.object({ id, name: z.string() })),
+  /** The open case about this string, if there is one. */
+  openCase: z.object({ id, number: z.int(), title: z.string() }).nullable(),
 });
 export type StringPage = z.infer<typeof stringPage>;
 
@@ -62,8 +66,14 @@ export const HISTORY_RANGES = ['day', 'week', 'month', 'year'] as const;
 export type HistoryRange = (typeof HISTORY_RANGES)[number];
 
 const day = z.iso.date('Give a day as 2026-11-03');
+export const HISTORY_QUANTITIES = ['voltage', 'current', 'power'] as const;
+export type HistoryQuantity = (typeof HISTORY_QUANTITIES)[number];
+
 export const historyQuery = z.strictObject({
   range: z.enum(HISTORY_RANGES).default('day'),
+  quantity: z.enum(HISTORY_QUANTITIES).default('voltage'),
+  /** Each sibling string's own line too. */
+  siblings: z.enum(['each']).optional(),
   /** The last day of the range, at the site; absent: today. */
   on: day.optional(),
   /** A part of the range, which may come finer; both or neither. Epoch seconds. */
@@ -86,14 +96,17 @@ export type ChartMark = z.infer<typeof chartMark>;
 const series = z.array(z.number().nullable());
 export const stringHistory = z.object({
   range: z.enum(HISTORY_RANGES),
+  quantity: z.enum(HISTORY_QUANTITIES),
+  /** V, A, W; kWh where a step is a day of power. */
+  unit: z.string(),
   resolution: z.enum(RESOLUTIONS),
   from: z.number(), // epoch s
   to: z.number(),
   timeZone: z.string(),
-  /** Epoch s, rising; a null voltage is a gap. */
+  /** Epoch s, rising; a null value is a gap. */
   at: z.array(z.number()),
-  voltage: series, // V, mean
-  low: series, // V, lowest within the step; as voltage where the step is a report
+  values: series, // mean
+  low: series, // lowest within the step; as the value where the step is a report
   high: series,
   energy: series, // Wh in the step; empty where the string's units tell nothing
   expected: z.object({
@@ -102,6 +115,12 @@ export const stringHistory = z.object({
     high: series,
     from: z.string(), // in words
   }),
+  /** What the other strings of the plane gave, in the middle, as this string's modules would have. */
+  middle: z.object({ at: z.array(z.number()), values: series, strings: z.int() }),
+  /** Each of them by itself, where asked for. */
+  siblings: z.array(z.object({ id, name: z.string(), at: z.array(z.number()), values: series })),
+  /** Readings of the time before, from an imported file. */
+  imported: z.object({ at: z.array(z.number()), values: series }),
   nights: z.array(z.tuple([z.number(), z.number()])),
   marks: z.array(chartMark),
   /** What the reader must know: "no minutes are kept so far back", "shared by two strings". */
@@ -112,8 +131,10 @@ export type StringHistory = z.infer<typeof stringHistory>;
 export const UNIT_QUANTITIES = ['voltage', 'current', 'temperature', 'power'] as const;
 export type UnitQuantity = (typeof UNIT_QUANTITIES)[number];
 
+export const UNIT_RANGES = ['day', 'week', 'month'] as const;
 export const unitsQuery = z.strictObject({
   quantity: z.enum(UNIT_QUANTITIES).default('voltage'),
+  range: z.enum(UNIT_RANGES).default('day'),
   on: day.optional(),
   /** Positions with commas; absent: all. */
   positions: z
@@ -127,11 +148,22 @@ export const stringUnits = z.object({
   quantity: z.enum(UNIT_QUANTITIES),
   unit: z.string(), // V, A, °C, W
   side: z.enum(['output', 'module']), // where a voltage is measured
+  range: z.enum(UNIT_RANGES),
+  resolution: z.enum(['minute', 'quarter']),
   from: z.number(),
   to: z.number(),
   timeZone: z.string(),
   at: z.array(z.number()),
   lines: z.array(z.object({ position: z.int(), values: series })),
+  /** Units that came or went in this time, by position; what was read before is another unit's. */
+  moves: z.array(
+    z.object({
+      position: z.int(),
+      at: z.number(), // epoch s
+      out: z.string().nullable(), // serials
+      in: z.string().nullable(),
+    }),
+  ),
   nights: z.array(z.tuple([z.number(), z.number()])),
 });
 export type StringUnits = z.infer<typeof stringUnits>;

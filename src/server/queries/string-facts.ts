@@ -33,6 +33,10 @@ export interface StringFacts {
   unitTypeName: string;
   measures: UnitType['measures'];
   insulationTestMax: number | null;
+  /** V of one unit in shutdown, nominal; V of its bypass path under load. */
+  shutdownVoltage: number;
+  bypassVoltage: number;
+  cableOhm: number;
   moduleTypeId: number;
   module: ModuleType;
   evidence: { units?: Record<string, VerdictEvidence>; finding?: FindingEvidence | null } | null;
@@ -53,6 +57,8 @@ export async function stringFacts(tx: Tx, ref: string): Promise<StringFacts | un
             p.id as "planeId", p.name as "planeName", p.surface_tilt as "surfaceTilt",
             p.surface_azimuth as "surfaceAzimuth", p.albedo,
             ut.name as "unitTypeName", ut.measures, ut.insulation_test_max as "insulationTestMax",
+            ut.shutdown_voltage_nominal::float8 as "shutdownVoltage", ut.bypass_voltage::float8 as "bypassVoltage",
+            s.cable_resistance::float8 as "cableOhm",
             m.id as "moduleTypeId",
             json_build_object('name', m.name, 'vocRef', m.voc_ref, 'iscRef', m.isc_ref, 'vmpRef', m.vmp_ref,
               'impRef', m.imp_ref, 'betaVoc', m.beta_voc, 'alphaIsc', m.alpha_isc, 'gammaPmp', m.gamma_pmp,
@@ -85,10 +91,17 @@ export async function stringNames(tx: Tx, siteId: number): Promise<{ id: string;
   return rows.sort((a, b) => order.compare(a.name, b.name));
 }
 
+export interface Sibling {
+  id: number;
+  ref: string;
+  name: string;
+  units: number;
+}
+
 /** Strings to compare with: same plane, same module type, same way of working. At most a dozen: a median needs no more. */
-export async function siblingsOf(tx: Tx, facts: StringFacts): Promise<{ id: number; units: number }[]> {
-  const { rows } = await tx.raw<{ rows: { id: number; units: number }[] }>(
-    `select s.id, s.slots::int as units
+export async function siblingsOf(tx: Tx, facts: StringFacts): Promise<Sibling[]> {
+  const { rows } = await tx.raw<{ rows: Sibling[] }>(
+    `select s.id, s.ref, s.name, s.slots::int as units
      from string s
      where s.plane_id = :planeId and s.id <> :id and s.kind <> 'shutdown_only'
        and (s.kind = 'optimizing') = (:kind = 'optimizing')
@@ -97,4 +110,27 @@ export async function siblingsOf(tx: Tx, facts: StringFacts): Promise<{ id: numb
     { planeId: facts.planeId, id: facts.id, kind: facts.kind, moduleTypeId: facts.moduleTypeId },
   );
   return rows;
+}
+
+/** The strings of an input, in the order in which they were entered. */
+export async function stringsOnInput(tx: Tx, inputId: number): Promise<number[]> {
+  const { rows } = await tx.raw<{ rows: { id: number }[] }>(
+    'select id from string where input_id = ? order by id',
+    [inputId],
+  );
+  return rows.map((r) => r.id);
+}
+
+/** The open case that names a string, the newest. */
+export async function openCaseOf(
+  tx: Tx,
+  string: { id: number; siteId: number },
+): Promise<{ id: string; number: number; title: string } | null> {
+  const { rows } = await tx.raw<{ rows: { id: string; number: number; title: string }[] }>(
+    `select ref as id, number, title from case_file
+     where site_id = :siteId and closed_at is null and string_ids @> array[:id::int4]
+     order by opened_at desc limit 1`,
+    string,
+  );
+  return rows[0] ?? null;
 }

@@ -2,61 +2,90 @@ import type { EventItem } from '../../schemas/api/now';
 import type { InForce } from '../../domain/verdicts/codes';
 import type { Tx } from '../db/transaction';
 
-/** Readings of one string over time, and what they are compared with. Instants in epoch seconds, volts. */
+/** Readings of one string over time, and what they are compared with. Instants in epoch seconds; V, A, W. */
 export interface HistoryPoint {
   at: number;
-  voltage: number;
+  value: number;
   low: number;
   high: number;
   /** Wh in the step; null where nothing tells. */
   energy: number | null;
 }
-interface Window {
+export interface Window {
   from: Date;
   to: Date;
 }
+export type Quantity = 'voltage' | 'current' | 'power';
 
-/** Means of reports over steps of `stepS` seconds; with the report interval the reports as they came. */
+/** One report's figure: units of a string carry one current, so the middle one stands for it. */
+const OF_FRAME: Record<Quantity, string> = {
+  voltage: 'voltage_sum / 100.0',
+  power: 'power_sum / 10.0',
+  current: '(select percentile_cont(0.5) within group (order by c) from unnest(current) c) / 1000.0',
+};
+const OF_QUARTER: Record<Quantity, { value: string; low: string; high: string }> = {
+  voltage: { value: 'voltage_avg / 100.0', low: 'voltage_min / 100.0', high: 'voltage_max / 100.0' },
+  power: { value: 'energy / 150.0', low: 'energy / 150.0', high: 'energy / 150.0' },
+  current: {
+    value: '(select percentile_cont(0.5) within group (order by c) from unnest(unit_current) c) / 1000.0',
+    low: 'null::float8',
+    high: 'null::float8',
+  },
+};
+
+/** Means of reports over steps of `stepS` seconds, lowest and highest kept; with the report interval the reports as they came. */
 export async function stringMinutes(
   tx: Tx,
   stringId: number,
   window: Window,
   stepS: number,
+  quantity: Quantity,
 ): Promise<HistoryPoint[]> {
   const { rows } = await tx.raw<{ rows: HistoryPoint[] }>(
-    `select extract(epoch from step)::int8 as at, avg(voltage_sum)::float8 / 100 as voltage,
-            min(voltage_sum)::float8 / 100 as low, max(voltage_sum)::float8 / 100 as high,
+    `select extract(epoch from step)::int8 as at, avg(v)::float8 as value, min(v)::float8 as low, max(v)::float8 as high,
             avg(power_sum)::float8 / 10 * :stepS / 3600 as energy
      from (select date_bin(make_interval(secs => :stepS), at, timestamptz '2000-01-01 00:00Z') as step,
-                  voltage_sum, power_sum
+                  ${OF_FRAME[quantity]} as v, power_sum
            from string_frame where string_id = :stringId and at >= :from and at < :to) f
-     group by step order by step`,
+     where v is not null group by step order by step`,
     { stringId, stepS, ...window },
   );
   return rows;
 }
 
-export async function stringQuarters(tx: Tx, stringId: number, window: Window): Promise<HistoryPoint[]> {
+export async function stringQuarters(
+  tx: Tx,
+  stringId: number,
+  window: Window,
+  quantity: Quantity,
+): Promise<HistoryPoint[]> {
+  const of = OF_QUARTER[quantity];
   const { rows } = await tx.raw<{ rows: HistoryPoint[] }>(
-    `select extract(epoch from at)::int8 + 450 as at, voltage_avg / 100.0::float8 as voltage,
-            voltage_min / 100.0::float8 as low, voltage_max / 100.0::float8 as high, energy / 600.0::float8 as energy
-     from string_quarter where string_id = :stringId and at >= :from and at < :to order by at`,
+    `select at, v::float8 as value, coalesce(low, v)::float8 as low, coalesce(high, v)::float8 as high, energy
+     from (select extract(epoch from at)::int8 + 450 as at, ${of.value} as v, ${of.low} as low, ${of.high} as high,
+                  energy / 600.0::float8 as energy
+           from string_quarter where string_id = :stringId and at >= :from and at < :to) q
+     where v is not null order by at`,
     { stringId, ...window },
   );
   return rows;
 }
 
-/** Days as instants of the site's noon. */
+/** Days as instants of the site's noon: voltage, or what the day made (kWh). */
 export async function stringDays(
   tx: Tx,
   stringId: number,
   window: Window,
   timeZone: string,
+  quantity: 'voltage' | 'power',
 ): Promise<HistoryPoint[]> {
+  const [value, high] =
+    quantity === 'voltage'
+      ? ['voltage_avg / 100.0::float8', 'voltage_max / 100.0::float8']
+      : ['energy / 1000.0::float8', 'energy / 1000.0::float8'];
   const { rows } = await tx.raw<{ rows: HistoryPoint[] }>(
     `select extract(epoch from (day + time '12:00') at time zone :timeZone)::int8 as at,
-            voltage_avg / 100.0::float8 as voltage, voltage_avg / 100.0::float8 as low,
-            voltage_max / 100.0::float8 as high, energy::float8 as energy
+            ${value} as value, ${value} as low, ${high} as high, energy::float8 as energy
      from string_day
      where string_id = :stringId and day >= (:from::timestamptz at time zone :timeZone)::date
        and day <= (:to::timestamptz at time zone :timeZone)::date
@@ -66,43 +95,83 @@ export async function stringDays(
   return rows;
 }
 
-/** For strings whose units tell nothing: the voltage at their input, mean over steps of `stepS` seconds. */
+const OF_INPUT: Record<Quantity, string> = {
+  voltage: 'voltage / 10.0',
+  current: 'current / 100.0',
+  power: 'voltage::float8 * current / 1000.0',
+};
+
+/** For strings whose units tell nothing: what their input measures, mean over steps of `stepS` seconds. */
 export async function inputHistory(
   tx: Tx,
   inputId: number,
   window: Window,
   stepS: number,
+  quantity: Quantity,
 ): Promise<HistoryPoint[]> {
   const { rows } = await tx.raw<{ rows: HistoryPoint[] }>(
-    `select extract(epoch from step)::int8 as at, avg(voltage)::float8 / 10 as voltage,
-            min(voltage)::float8 / 10 as low, max(voltage)::float8 / 10 as high, null as energy
-     from (select date_bin(make_interval(secs => :stepS), at, timestamptz '2000-01-01 00:00Z') as step, voltage
-           from input_frame where input_id = :inputId and at >= :from and at < :to and voltage is not null) f
-     group by step order by step`,
+    `select extract(epoch from step)::int8 as at, avg(v)::float8 as value, min(v)::float8 as low, max(v)::float8 as high,
+            null as energy
+     from (select date_bin(make_interval(secs => :stepS), at, timestamptz '2000-01-01 00:00Z') as step,
+                  ${OF_INPUT[quantity]} as v
+           from input_frame where input_id = :inputId and at >= :from and at < :to) f
+     where v is not null group by step order by step`,
     { inputId, stepS, ...window },
   );
   return rows;
 }
 
-const SOURCES = {
-  minute: `select string_id, date_bin(make_interval(secs => :stepS), at, timestamptz '2000-01-01 00:00Z') as step,
-                  voltage_sum as voltage
-           from string_frame where string_id = any (:ids) and at >= :from and at < :to`,
-  quarter: `select string_id, at as step, voltage_avg as voltage
-            from string_quarter where string_id = any (:ids) and at >= :from and at < :to`,
-  day: `select string_id, (day + time '12:00') at time zone :timeZone as step, voltage_avg as voltage
-        from string_day where string_id = any (:ids) and day >= (:from::timestamptz at time zone :timeZone)::date
-          and day <= (:to::timestamptz at time zone :timeZone)::date`,
-} as const;
+interface SiblingOptions {
+  resolution: 'minute' | 'quarter' | 'day';
+  stepS: number;
+  timeZone: string;
+  passingFrom: number;
+  quantity: Quantity;
+}
+
+/** What each string told in a step: its voltage (cV), and the quantity itself in V, A, W, or kWh a day. */
+const sourceOf = ({ resolution, quantity }: SiblingOptions): string =>
+  ({
+    minute: `select string_id, date_bin(make_interval(secs => :stepS), at, timestamptz '2000-01-01 00:00Z') as step,
+                    voltage_sum as voltage, ${OF_FRAME[quantity]} as v
+             from string_frame where string_id = any (:ids) and at >= :from and at < :to`,
+    quarter: `select string_id, at as step, voltage_avg as voltage, ${OF_QUARTER[quantity].value} as v
+              from string_quarter where string_id = any (:ids) and at >= :from and at < :to`,
+    day: `select string_id, (day + time '12:00') at time zone :timeZone as step, voltage_avg as voltage,
+                 ${quantity === 'voltage' ? 'voltage_avg / 100.0' : 'energy / 1000.0'} as v
+          from string_day where string_id = any (:ids) and day >= (:from::timestamptz at time zone :timeZone)::date
+            and day <= (:to::timestamptz at time zone :timeZone)::date`,
+  })[resolution];
+
+/** Each sibling's figure a unit (a current is every unit's own), where it passes. */
+const eachOf = (options: SiblingOptions): string => `
+  with told as (${sourceOf(options)}),
+  each as (
+    select step, t.string_id, avg(t.v)::float8 ${options.quantity === 'current' ? '' : '/ u.units'} as v
+    from told t join unnest(:ids::int4[], :units::int4[]) as u(id, units) on u.id = t.string_id
+    group by step, t.string_id, u.units having avg(t.voltage) / 100.0 / u.units >= :passingFrom)`;
 
 export interface SiblingStep {
   at: number;
-  /** V a unit: median over the siblings that pass, and its quartiles. */
+  /** A unit: median over the siblings that pass, and its quartiles. */
   typical: number;
   low: number;
   high: number;
   strings: number;
 }
+
+const siblingParameters = (
+  siblings: readonly { id: number; units: number }[],
+  window: Window,
+  { stepS, timeZone, passingFrom }: SiblingOptions,
+) => ({
+  ids: siblings.map((s) => s.id),
+  units: siblings.map((s) => s.units),
+  stepS,
+  timeZone,
+  passingFrom,
+  ...window,
+});
 
 /**
  * What a passing unit of the siblings gave, step by step. Siblings below `passingFrom` volts a unit are in shutdown or
@@ -112,27 +181,56 @@ export async function siblingHistory(
   tx: Tx,
   siblings: readonly { id: number; units: number }[],
   window: Window,
-  options: { resolution: keyof typeof SOURCES; stepS: number; timeZone: string; passingFrom: number },
+  options: SiblingOptions,
 ): Promise<SiblingStep[]> {
   if (siblings.length === 0) return [];
   const { rows } = await tx.raw<{ rows: SiblingStep[] }>(
-    `with told as (${SOURCES[options.resolution]}),
-     each as (
-       select step, avg(t.voltage)::float8 / 100 / u.units as v
-       from told t join unnest(:ids::int4[], :units::int4[]) as u(id, units) on u.id = t.string_id
-       group by step, t.string_id, u.units)
+    `${eachOf(options)}
      select extract(epoch from step)::int8 as at, percentile_cont(0.5) within group (order by v) as typical,
             percentile_cont(0.25) within group (order by v) as low,
             percentile_cont(0.75) within group (order by v) as high, count(*)::int as strings
-     from each where v >= :passingFrom group by step order by step`,
-    {
-      ids: siblings.map((s) => s.id),
-      units: siblings.map((s) => s.units),
-      stepS: options.stepS,
-      timeZone: options.timeZone,
-      passingFrom: options.passingFrom,
-      ...window,
-    },
+     from each where v is not null group by step order by step`,
+    siblingParameters(siblings, window, options),
+  );
+  return rows;
+}
+
+/** Each sibling by itself, a unit, whether it passes or not. */
+export async function siblingLines(
+  tx: Tx,
+  siblings: readonly { id: number; units: number }[],
+  window: Window,
+  options: Omit<SiblingOptions, 'passingFrom'>,
+): Promise<{ stringId: number; at: number[]; values: number[] }[]> {
+  if (siblings.length === 0) return [];
+  const all = { ...options, passingFrom: -1000 };
+  const { rows } = await tx.raw<{ rows: { stringId: number; at: number[]; values: number[] }[] }>(
+    `${eachOf(all)}
+     select string_id as "stringId", json_agg(extract(epoch from step)::int8 order by step) as at,
+            json_agg(v order by step) as values
+     from each where v is not null group by string_id`,
+    siblingParameters(siblings, window, all),
+  );
+  return rows;
+}
+
+/** Light in the plane by its sensor, W/m², over steps; empty where there is none. */
+export async function planeLight(
+  tx: Tx,
+  planeId: number,
+  window: Window,
+  stepS: number,
+): Promise<{ at: number; poaGlobal: number; temperatureModule: number | null }[]> {
+  const { rows } = await tx.raw<{
+    rows: { at: number; poaGlobal: number; temperatureModule: number | null }[];
+  }>(
+    `select extract(epoch from date_bin(make_interval(secs => :stepS), f.at, timestamptz '2000-01-01 00:00Z'))::int8 as at,
+            avg(f.irradiance)::float8 as "poaGlobal", avg(f.temperature_module)::float8 / 10 as "temperatureModule"
+     from sensor n join weather_frame f on f.sensor_id = n.id
+     where n.plane_id = :planeId and n.kind = 'poa_global' and f.irradiance is not null
+       and f.at >= :from and f.at < :to
+     group by 1 order by 1`,
+    { planeId, stepS, ...window },
   );
   return rows;
 }
@@ -195,37 +293,6 @@ export async function commandsOfZone(
      order by since`,
     { zoneId, ...window },
   );
-  return rows;
-}
-
-const UNIT_COLUMNS = {
-  voltage: ['voltage', 100],
-  voltageIn: ['voltage_in', 100],
-  current: ['current', 1000],
-  temperature: ['temperature', 10],
-  // where the unit reports no power it is voltage times current, dW from cV and mA
-  power: [
-    `coalesce(power, (select array_agg((v::int8 * c / 10000)::int2 order by o)
-       from unnest(voltage, current) with ordinality u(v, c, o)))`,
-    10,
-  ],
-} as const;
-export type UnitColumn = keyof typeof UNIT_COLUMNS;
-
-/** One quantity of every unit, report by report; arrays in slot order. */
-export async function unitMinutes(
-  tx: Tx,
-  stringId: number,
-  window: Window,
-  column: UnitColumn,
-): Promise<{ at: number; values: (number | null)[] | null }[]> {
-  const [name, scale] = UNIT_COLUMNS[column];
-  const { rows } = await tx.raw<{ rows: { at: number; values: (number | null)[] | null }[] }>(
-    `select extract(epoch from at)::int8 as at, to_json(${name}) as values
-     from string_frame where string_id = :stringId and at >= :from and at < :to order by at`,
-    { stringId, ...window },
-  );
-  for (const row of rows) row.values = row.values?.map((v) => (v === null ? null : v / scale)) ?? null;
   return rows;
 }
 

@@ -1,6 +1,9 @@
 import type { HistoryQuery, UnitsQuery } from '../../schemas/api/string';
 import type { Tx } from '../db/transaction';
-import { noSuchString, readHistory, readUnits } from '../services/string-history';
+import { noSuchString } from '../services/string-axis';
+import { readHistory } from '../services/string-history';
+import { readHeat, readUnits } from '../services/string-units';
+import { readLoop } from '../services/string-loop';
 import { stringFacts } from '../queries/string-facts';
 import { csvResponse, type Cell, type Column } from './csv';
 
@@ -16,7 +19,7 @@ async function nameOf(tx: Tx, ref: string): Promise<string> {
 }
 
 /**
- * The voltage history as a download; rows are the steps shown, gaps left out. Times in UTC.
+ * The history shown as a download; rows are the steps shown, gaps left out. Times in UTC.
  * @throws AppError as `readHistory`
  */
 export async function historyCsv(tx: Tx, ref: string, query: HistoryQuery, now: Date): Promise<Response> {
@@ -25,7 +28,7 @@ export async function historyCsv(tx: Tx, ref: string, query: HistoryQuery, now: 
   const expected = history.expected.at.map((at, i) => ({ at, i }));
   let next = 0;
   const rows = history.at.flatMap((at, i) => {
-    if (history.voltage[i] === null) return [];
+    if (history.values[i] === null) return [];
     while (next + 1 < expected.length && (expected[next + 1]?.at ?? Infinity) <= at) next++;
     return [{ at, i, e: (expected[next]?.at ?? Infinity) <= at ? next : -1 }];
   });
@@ -38,17 +41,66 @@ export async function historyCsv(tx: Tx, ref: string, query: HistoryQuery, now: 
     value: (r): Cell => rounded(values[r.i], digits),
   });
   return csvResponse(
-    `${name} voltage ${history.range} to ${dayOf(history.to)}`,
+    `${name} ${history.quantity} ${history.range} to ${dayOf(history.to)}`,
     [
       { header: 'time (UTC)', value: (r) => instant(r.at) },
-      column('voltage, mean (V)', history.voltage, 2),
-      column('voltage, lowest (V)', history.low, 2),
-      column('voltage, highest (V)', history.high, 2),
+      column(`${history.quantity}, mean (${history.unit})`, history.values, 3),
+      column(`${history.quantity}, lowest (${history.unit})`, history.low, 3),
+      column(`${history.quantity}, highest (${history.unit})`, history.high, 3),
       column('energy in the step (Wh)', history.energy, 2),
-      { header: 'expected from (V)', value: (r) => rounded(history.expected.low[r.e], 1) },
-      { header: 'expected to (V)', value: (r) => rounded(history.expected.high[r.e], 1) },
+      { header: `expected from (${history.unit})`, value: (r) => rounded(history.expected.low[r.e], 3) },
+      { header: `expected to (${history.unit})`, value: (r) => rounded(history.expected.high[r.e], 3) },
     ],
     rows,
+  );
+}
+
+/**
+ * Every unit's figures of a day as a download, one row a step. Times in UTC.
+ * @throws AppError as `readHeat`
+ */
+export async function heatCsv(
+  tx: Tx,
+  ref: string,
+  query: Parameters<typeof readHeat>[2],
+  now: Date,
+): Promise<Response> {
+  const name = await nameOf(tx, ref);
+  const heat = await readHeat(tx, ref, query, now);
+  const rows = heat.at.map((at, i) => ({ at, i }));
+  return csvResponse(
+    `${name} units ${heat.quantity} ${heat.day} all`,
+    [
+      { header: 'time (UTC)', value: (r) => instant(r.at) },
+      ...heat.rows.map((row): Column<(typeof rows)[0]> => ({
+        header: `position ${row.position} (${heat.unit})`,
+        value: (r) => rounded(row.values[r.i], 3),
+      })),
+    ],
+    rows,
+  );
+}
+
+/**
+ * The points of the resistance as a download. Times in UTC.
+ * @throws AppError as `readLoop`
+ */
+export async function loopCsv(
+  tx: Tx,
+  ref: string,
+  query: Parameters<typeof readLoop>[2],
+  now: Date,
+): Promise<Response> {
+  const name = await nameOf(tx, ref);
+  const loop = await readLoop(tx, ref, query, now);
+  return csvResponse(
+    `${name} loop ${loop.fromDay} to ${loop.day}`,
+    [
+      { header: 'time (UTC)', value: (p) => instant(p.at) },
+      { header: 'string current (A)', value: (p) => rounded(p.ownA, 3) },
+      { header: 'sum of the units less the input (V)', value: (p) => rounded(p.gapV, 3) },
+    ],
+    loop.points,
   );
 }
 

@@ -1,73 +1,68 @@
 import { expectedHistory, type ExpectedHistory } from '../../domain/output/expected-history';
 import { moduleVoltage } from '../../domain/output/expected';
+import { planeWords } from '../../domain/output/plane-words';
 import { clearSkyInPlane } from '../../domain/photovoltaics/irradiance/clear-sky-plane';
-import { median } from '../../domain/output/robust';
-import { sunRiseSet } from '../../domain/photovoltaics/sun/rise-set';
-import { commandWords, eventWords } from '../../domain/verdicts/event-words';
-import type {
-  ChartMark,
-  HistoryQuery,
-  HistoryRange,
-  StringHistory,
-  StringUnits,
-  UnitsQuery,
-} from '../../schemas/api/string';
+import { temperatureCellNoct } from '../../domain/photovoltaics/temperature/cell';
+import type { HistoryQuantity, HistoryQuery, HistoryRange, StringHistory } from '../../schemas/api/string';
 import type { Tx } from '../db/transaction';
 import { AppError } from '../errors';
-import { planeWords } from '../../domain/output/plane-words';
-import { siblingsOf, stringFacts, type StringFacts } from '../queries/string-facts';
+import { siblingsOf, stringFacts, type Sibling, type StringFacts } from '../queries/string-facts';
+import { importedDays, importedSteps, whereNothingElse } from '../queries/history-readings';
 import {
-  commandsOfZone,
   dayBounds,
-  eventsOfString,
   inputHistory,
+  planeLight,
   siblingHistory,
+  siblingLines,
   stringDays,
   stringMinutes,
   stringQuarters,
-  unitMinutes,
   type HistoryPoint,
 } from '../queries/string-history';
+import { gapFrom, marksOf, nightsOf, noSuchString, planFor, withGaps, type Plan } from './string-axis';
 
 const DAYS: Record<HistoryRange, number> = { day: 1, week: 7, month: 31, year: 366 };
-const HOUR_S = 3600;
-const DAY_S = 24 * HOUR_S;
-type Resolution = StringHistory['resolution'];
+const DAY_S = 86_400;
+/** Reports of so long a time are read themselves where the roll-up keeps no lowest and highest. */
+const PEAKS_FROM_REPORTS_S = 8 * DAY_S;
+const UNITS: Record<HistoryQuantity, string> = { voltage: 'V', current: 'A', power: 'W' };
 
-export const noSuchString = (): AppError =>
-  new AppError('not_found', { message: 'No such string. Check the link, or go back to the fleet.' });
-
-interface Plan {
-  from: Date;
-  to: Date;
-  resolution: Resolution;
-  stepS: number;
-}
-
-/** How finely a stretch of time is read: never more than some two thousand points. */
-function planFor(from: Date, to: Date, reportIntervalS: number): Plan {
-  const spanS = (to.getTime() - from.getTime()) / 1000;
-  if (spanS <= 36 * HOUR_S)
-    return {
-      from,
-      to,
-      resolution: 'minute',
-      stepS: spanS <= 6 * HOUR_S ? reportIntervalS : Math.max(60, reportIntervalS),
-    };
-  if (spanS <= 45 * DAY_S) return { from, to, resolution: 'quarter', stepS: 900 };
-  return { from, to, resolution: 'day', stepS: DAY_S };
-}
-
-async function read(tx: Tx, facts: StringFacts, plan: Plan): Promise<HistoryPoint[]> {
-  if (facts.kind === 'shutdown_only')
-    return inputHistory(tx, facts.inputId, plan, Math.min(DAY_S, Math.max(plan.stepS, 60)));
-  if (plan.resolution === 'minute') return stringMinutes(tx, facts.id, plan, plan.stepS);
-  if (plan.resolution === 'quarter') return stringQuarters(tx, facts.id, plan);
-  return stringDays(tx, facts.id, plan, facts.timeZone);
+async function read(
+  tx: Tx,
+  facts: StringFacts,
+  plan: Plan,
+  quantity: HistoryQuantity,
+): Promise<HistoryPoint[]> {
+  if (facts.kind === 'shutdown_only') {
+    const points = await inputHistory(
+      tx,
+      facts.inputId,
+      plan,
+      Math.min(DAY_S, Math.max(plan.stepS, 60)),
+      quantity,
+    );
+    if (plan.resolution !== 'day' || quantity !== 'power') return points;
+    const kWh = (watts: number) => (watts * 24) / 1000;
+    return points.map((p) => ({ ...p, value: kWh(p.value), low: kWh(p.value), high: kWh(p.value) }));
+  }
+  if (plan.resolution === 'minute') return stringMinutes(tx, facts.id, plan, plan.stepS, quantity);
+  if (plan.resolution === 'day')
+    return quantity === 'current' ? [] : stringDays(tx, facts.id, plan, facts.timeZone, quantity);
+  const quarters = await stringQuarters(tx, facts.id, plan, quantity);
+  if (quantity === 'voltage' || plan.to.getTime() - plan.from.getTime() > PEAKS_FROM_REPORTS_S * 1000)
+    return quarters;
+  // the roll-up keeps no peaks of these: they come from the reports, as far as those are kept
+  const peaks = new Map(
+    (await stringMinutes(tx, facts.id, plan, plan.stepS, quantity)).map((p) => [p.at + plan.stepS / 2, p]),
+  );
+  return quarters.map((q) => {
+    const peak = peaks.get(q.at);
+    return peak ? { ...q, low: peak.low, high: peak.high } : q;
+  });
 }
 
 /** V of a passing module under load by its datasheet under an ordinary sky; null while it is too dark to say. */
-function modelOf(facts: StringFacts): (at: number) => number | null {
+export function voltageModel(facts: StringFacts): (at: number) => number | null {
   if (facts.kind === 'optimizing') return () => null; // the inverter sets the voltage of such a string
   return (at) => {
     const { poaGlobal } = clearSkyInPlane(at * 1000, facts);
@@ -79,134 +74,157 @@ function modelOf(facts: StringFacts): (at: number) => number | null {
   };
 }
 
-const FROM_WORDS: Record<ExpectedHistory['from'], (facts: StringFacts) => string> = {
+/** Air where nothing measures it, °C. */
+const AIR_UNKNOWN = 15;
+
+/** A or W of a module under measured light; null where no sensor lies in the plane: a sky that isn't known tells no current. */
+function lightModel(
+  facts: StringFacts,
+  light: readonly { at: number; poaGlobal: number; temperatureModule: number | null }[],
+  quantity: 'current' | 'power',
+): (at: number) => number | null {
+  const { module } = facts;
+  const byStep = new Map(light.map((l) => [l.at, l]));
+  return (at) => {
+    const l = byStep.get(at);
+    if (!l || l.poaGlobal < 20) return null;
+    const share = l.poaGlobal / 1000;
+    if (quantity === 'current') return module.impRef * share;
+    const cell = l.temperatureModule ?? temperatureCellNoct(l.poaGlobal, AIR_UNKNOWN, module.noct);
+    return module.impRef * module.vmpRef * share * (1 + module.gammaPmp * (cell - 25));
+  };
+}
+
+const FROM_WORDS: Record<ExpectedHistory['from'], (facts: StringFacts, model: string) => string> = {
   siblings: (f) => `other strings on the ${planeWords(f.planeName)}`,
-  siblings_and_model: (f) =>
-    `other strings on the ${planeWords(f.planeName)}; where they tell nothing, the datasheet under a clear sky`,
-  model: () => 'the datasheet under a clear sky, so the band is wide',
+  siblings_and_model: (f, model) =>
+    `other strings on the ${planeWords(f.planeName)}; where they tell nothing, ${model}`,
+  model: (_, model) => `${model}, so the band is wide`,
   nothing: () => '',
 };
 
-async function expectedOver(tx: Tx, facts: StringFacts, plan: Plan): Promise<StringHistory['expected']> {
+interface Compared {
+  expected: StringHistory['expected'];
+  middle: StringHistory['middle'];
+  siblings: StringHistory['siblings'];
+}
+
+async function comparedWith(
+  tx: Tx,
+  facts: StringFacts,
+  plan: Plan,
+  query: HistoryQuery,
+  siblings: readonly Sibling[],
+): Promise<Compared> {
+  const { quantity } = query;
   const stepS = plan.resolution === 'minute' ? Math.max(300, plan.stepS) : plan.stepS;
   const offset = plan.resolution === 'quarter' ? 450 : 0;
-  const siblings = await siblingHistory(tx, await siblingsOf(tx, facts), plan, {
-    resolution: plan.resolution,
-    stepS,
-    timeZone: facts.timeZone,
-    passingFrom: facts.module.vmpRef * 0.5,
-  });
-  const shifted = siblings.map((s) => ({ ...s, at: s.at + offset }));
+  const options = { resolution: plan.resolution, stepS, timeZone: facts.timeZone, quantity };
+  const nothing = plan.resolution === 'day' && quantity === 'current';
+  const steps = nothing
+    ? []
+    : await siblingHistory(tx, siblings, plan, { ...options, passingFrom: facts.module.vmpRef * 0.5 });
+  const shifted = steps.map((s) => ({ ...s, at: s.at + offset }));
   const start = Math.floor(plan.from.getTime() / 1000 / stepS) * stepS + offset;
   const end = plan.to.getTime() / 1000;
   const grid =
     plan.resolution === 'day'
       ? shifted.map((s) => s.at)
       : Array.from({ length: Math.max(0, Math.ceil((end - start) / stepS)) }, (_, i) => start + i * stepS);
+  const units = quantity === 'current' ? 1 : facts.units;
+  const light =
+    plan.resolution !== 'day' && quantity !== 'voltage'
+      ? (await planeLight(tx, facts.planeId, plan, stepS)).map((l) => ({ ...l, at: l.at + offset }))
+      : [];
   const band = expectedHistory({
     grid,
     siblings: shifted,
-    model: plan.resolution === 'day' ? () => null : modelOf(facts),
-    units: facts.units,
+    model:
+      plan.resolution === 'day'
+        ? () => null
+        : quantity === 'voltage'
+          ? voltageModel(facts)
+          : lightModel(facts, light, quantity),
+    units,
     bareModel: true,
   });
-  return { at: band.at, low: band.low, high: band.high, from: FROM_WORDS[band.from](facts) };
-}
-
-/** Between sunset and sunrise, for stretches of up to ten days. */
-export function nightsOf(
-  place: { latitude: number; longitude: number },
-  from: Date,
-  to: Date,
-): [number, number][] {
-  if (to.getTime() - from.getTime() > 10 * DAY_S * 1000) return [];
-  const edges: { at: number; up: boolean }[] = [];
-  let upAllDay: boolean | null = null;
-  for (let day = from.getTime() - DAY_S * 1000; day <= to.getTime() + DAY_S * 1000; day += DAY_S * 1000) {
-    const { sunrise, sunset, sunUp } = sunRiseSet(day, place, { beyondDay: 'actual' });
-    if (sunrise !== null) edges.push({ at: sunrise, up: true });
-    if (sunset !== null) edges.push({ at: sunset, up: false });
-    if (sunUp !== 'rises_and_sets') upAllDay = sunUp === 'all_day';
-  }
-  edges.sort((a, b) => a.at - b.at);
-  const start = from.getTime();
-  const end = to.getTime();
-  const before = edges.findLast((e) => e.at <= start);
-  let up = before?.up ?? upAllDay ?? true;
-  let since = start;
-  const nights: [number, number][] = [];
-  for (const edge of [...edges.filter((e) => e.at > start && e.at < end), { at: end, up: !up }]) {
-    if (!up && edge.at > since) nights.push([Math.round(since / 1000), Math.round(edge.at / 1000)]);
-    up = edge.up;
-    since = edge.at;
-  }
-  return nights;
-}
-
-/** Commands as stretches, what happened to the units as instants. */
-async function marksOf(tx: Tx, facts: StringFacts, plan: Plan, now: Date): Promise<ChartMark[]> {
-  const commands = await commandsOfZone(tx, facts.zoneId, plan);
-  const from = plan.from.getTime() / 1000;
-  const to = Math.min(plan.to.getTime(), now.getTime()) / 1000;
-  const stretches = commands.flatMap((c, i): ChartMark[] => {
-    if (c.inForce === 'released') return [];
-    const since = Math.max(from, c.since.getTime() / 1000);
-    const until = Math.min(to, (commands[i + 1]?.since.getTime() ?? Infinity) / 1000);
-    return until > since ? [{ from: since, to: until, words: commandWords(c.inForce), tone: 'plum' }] : [];
-  });
-  const events = await eventsOfString(tx, facts, plan, 60);
-  const instants = events
-    .filter((e) => e.kind !== 'command' && (e.stringId !== null || plan.resolution === 'minute'))
-    .map((e): ChartMark => {
-      const { words, tone } = eventWords(e.kind, e.detail);
-      return { from: new Date(e.at).getTime() / 1000, to: null, words, tone };
-    });
-  return [...stretches, ...instants].sort((a, b) => a.from - b.from);
-}
-
-const SLOWEST_REPORT_S = 600;
-
-/** The spacing beyond which something is missing: from the points themselves, for a logger may report more slowly than its site is set to. */
-function gapFrom(at: readonly number[], stepS: number): number {
-  const spaces = at.slice(1).map((t, i) => t - (at[i] ?? t));
-  const usual = spaces.length > 0 ? Math.min(median(spaces), Math.max(stepS, SLOWEST_REPORT_S)) : stepS;
-  return 2.6 * Math.max(stepS, usual);
-}
-
-/** Puts a null between points that lie further apart than their step allows, so that a gap is drawn as one. */
-export function withGaps(
-  points: readonly HistoryPoint[],
-  stepS: number,
-): Pick<StringHistory, 'at' | 'voltage' | 'low' | 'high' | 'energy'> {
-  const out: Pick<StringHistory, 'at' | 'voltage' | 'low' | 'high' | 'energy'> = {
-    at: [],
-    voltage: [],
-    low: [],
-    high: [],
-    energy: [],
+  const each = query.siblings === 'each' && !nothing ? await siblingLines(tx, siblings, plan, options) : [];
+  const model =
+    quantity === 'voltage' ? 'the datasheet under a clear sky' : 'the irradiance sensor and the datasheet';
+  return {
+    expected: {
+      at: band.at,
+      low: band.low.map((v) => (v === null ? null : Math.max(0, v))),
+      high: band.high,
+      from: FROM_WORDS[band.from](facts, model),
+    },
+    middle: {
+      at: shifted.map((s) => s.at),
+      values: shifted.map((s) => s.typical * units),
+      strings: siblings.length,
+    },
+    siblings: each.flatMap((line) => {
+      const sibling = siblings.find((s) => s.id === line.stringId);
+      return sibling
+        ? [
+            {
+              id: sibling.ref,
+              name: sibling.name,
+              at: line.at.map((t) => t + offset),
+              values: line.values.map((v) => v * units),
+            },
+          ]
+        : [];
+    }),
   };
-  const gap = gapFrom(
-    points.map((p) => p.at),
-    stepS,
+}
+
+function notesOf(
+  facts: StringFacts,
+  query: HistoryQuery,
+  siblings: readonly Sibling[],
+  hasBand: boolean,
+): string[] {
+  const notes: string[] = [];
+  if (facts.kind === 'shutdown_only')
+    notes.push(
+      facts.inputStrings > 1
+        ? `Measured at the input, which ${facts.inputStrings} strings share: their common ${query.quantity === 'voltage' ? 'voltage' : query.quantity === 'current' ? 'sum of currents' : 'sum of power'}.`
+        : 'Measured at the input: units of this type report nothing themselves.',
+    );
+  if (siblings.length === 0)
+    notes.push(
+      `No other string on the ${planeWords(facts.planeName)} is of its kind: compared with the model${hasBand ? '' : ', which needs an irradiance sensor in the plane for this'}.`,
+    );
+  return notes;
+}
+
+/** What imported files say of the steps in which nothing was measured here; kWh where a step is a day of power. */
+async function importedOver(
+  tx: Tx,
+  facts: StringFacts,
+  plan: Plan,
+  quantity: HistoryQuantity,
+  measured: readonly HistoryPoint[],
+): Promise<{ at: number; value: number }[]> {
+  const of = facts.kind === 'shutdown_only' ? { inputId: facts.inputId } : { stringId: facts.id };
+  const days = plan.resolution === 'day';
+  const points = days
+    ? await importedDays(tx, of, plan, quantity, facts.timeZone)
+    : await importedSteps(tx, of, plan, quantity, plan.stepS);
+  const rest = whereNothingElse(
+    points,
+    measured.map((p) => p.at),
+    plan.stepS,
   );
-  let before = -Infinity;
-  for (const p of points) {
-    if (before > 0 && p.at - before > gap) {
-      out.at.push(before + stepS);
-      for (const column of [out.voltage, out.low, out.high, out.energy]) column.push(null);
-    }
-    out.at.push(p.at);
-    out.voltage.push(p.voltage);
-    out.low.push(p.low);
-    out.high.push(p.high);
-    out.energy.push(p.energy);
-    before = p.at;
-  }
-  return out;
+  return rest.points.flatMap((p) => {
+    const value = days && quantity === 'power' ? (p.energy === null ? null : p.energy / 1000) : p.value;
+    return value === null ? [] : [{ at: p.at, value }];
+  });
 }
 
 /**
- * A string's voltage over a day, week, month or year, or over a part of it more finely.
+ * A string's voltage, current or power over a day, week, month or year, or over a part of it more finely.
  * @throws AppError not_found, or invalid where only one end of a part is given
  */
 export async function readHistory(
@@ -220,35 +238,59 @@ export async function readHistory(
   const bounds = await dayBounds(tx, query.on ?? null, now, facts.timeZone, DAYS[query.range]);
   const part = partOf(query);
   let plan = planFor(part?.from ?? bounds.from, part?.to ?? bounds.to, facts.reportIntervalS);
-  let points = await read(tx, facts, plan);
-  const notes: string[] = [];
+  let points = await read(tx, facts, plan, query.quantity);
+  const kept: string[] = [];
   if (points.length === 0 && plan.resolution === 'minute' && facts.kind !== 'shutdown_only') {
     const coarser: Plan = { ...plan, resolution: 'quarter', stepS: 900 };
-    const quarters = await read(tx, facts, coarser);
+    const quarters = await read(tx, facts, coarser, query.quantity);
     if (quarters.length > 0) {
       plan = coarser;
       points = quarters;
-      notes.push('Single reports are no longer kept for this day: means of 15 minutes are shown.');
+      kept.push('Single reports are no longer kept for this day: means of 15 minutes are shown.');
     }
   }
-  if (facts.kind === 'shutdown_only')
-    notes.push(
-      facts.inputStrings > 1
-        ? `Measured at the input, which ${facts.inputStrings} strings share: their common voltage.`
-        : 'Measured at the input: units of this type report nothing themselves.',
-    );
+  const imported = await importedOver(tx, facts, plan, query.quantity, points);
+  if (plan.resolution === 'day' && query.quantity === 'current')
+    kept.push('A day has no single current: choose a day, a week or a month.');
+  const siblings = await siblingsOf(tx, facts);
+  const compared = await comparedWith(tx, facts, plan, query, siblings);
   return {
     range: query.range,
+    quantity: query.quantity,
+    unit: plan.resolution === 'day' && query.quantity === 'power' ? 'kWh' : UNITS[query.quantity],
     resolution: plan.resolution,
     from: plan.from.getTime() / 1000,
     to: plan.to.getTime() / 1000,
     timeZone: facts.timeZone,
     ...withGaps(points, plan.stepS),
-    expected: await expectedOver(tx, facts, plan),
+    ...compared,
+    imported: gapped(imported, Math.max(900, plan.stepS)),
     nights: nightsOf(facts, plan.from, plan.to),
     marks: await marksOf(tx, facts, plan, now),
-    notes,
+    notes: [
+      ...kept,
+      ...notesOf(facts, query, siblings, compared.expected.from !== ''),
+      ...(imported.length > 0 ? ['Dashed grey: read from an imported file, not by Wakeline.'] : []),
+    ],
   };
+}
+
+function gapped(points: readonly { at: number; value: number }[], stepS: number): StringHistory['imported'] {
+  const out: StringHistory['imported'] = { at: [], values: [] };
+  const gap = gapFrom(
+    points.map((p) => p.at),
+    stepS,
+  );
+  for (const p of points) {
+    const before = out.at.at(-1);
+    if (before !== undefined && p.at - before > gap) {
+      out.at.push(before + stepS);
+      out.values.push(null);
+    }
+    out.at.push(p.at);
+    out.values.push(p.value);
+  }
+  return out;
 }
 
 function partOf(query: HistoryQuery): { from: Date; to: Date } | null {
@@ -262,55 +304,4 @@ function partOf(query: HistoryQuery): { from: Date; to: Date } | null {
       ],
     });
   return { from: new Date(from * 1000), to: new Date(to * 1000) };
-}
-
-const UNIT: Record<UnitsQuery['quantity'], string> = {
-  voltage: 'V',
-  current: 'A',
-  temperature: '°C',
-  power: 'W',
-};
-
-/**
- * One quantity of chosen units over one day, report by report (at least a minute apart).
- * @throws AppError not_found
- */
-export async function readUnits(tx: Tx, ref: string, query: UnitsQuery, now: Date): Promise<StringUnits> {
-  const facts = await stringFacts(tx, ref);
-  if (!facts) throw noSuchString();
-  const { from, to } = await dayBounds(tx, query.on ?? null, now, facts.timeZone, 1);
-  const chosen = query.positions
-    ? [...new Set(query.positions.split(',').map(Number))].filter((p) => p >= 1 && p <= facts.slots)
-    : Array.from({ length: facts.slots }, (_, i) => i + 1);
-  const moduleSide = query.quantity === 'voltage' && facts.measures === 'input';
-  const rows = await unitMinutes(tx, facts.id, { from, to }, moduleSide ? 'voltageIn' : query.quantity);
-  const at: number[] = [];
-  const lines = chosen.map((position) => ({ position, values: [] as (number | null)[] }));
-  let before = -Infinity;
-  const stepS = Math.max(60, facts.reportIntervalS);
-  const gap = gapFrom(
-    rows.map((r) => r.at),
-    stepS,
-  );
-  for (const row of rows) {
-    if (row.at - before < stepS - 1) continue;
-    if (before > 0 && row.at - before > gap) {
-      at.push(before + stepS);
-      for (const line of lines) line.values.push(null);
-    }
-    at.push(row.at);
-    for (const line of lines) line.values.push(row.values?.[line.position - 1] ?? null);
-    before = row.at;
-  }
-  return {
-    quantity: query.quantity,
-    unit: UNIT[query.quantity],
-    side: moduleSide ? 'module' : 'output',
-    from: from.getTime() / 1000,
-    to: to.getTime() / 1000,
-    timeZone: facts.timeZone,
-    at,
-    lines,
-    nights: nightsOf(facts, from, to),
-  };
 }

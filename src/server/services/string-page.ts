@@ -4,9 +4,9 @@ import type { StringPage } from '../../schemas/api/string';
 import type { Tx } from '../db/transaction';
 import { stringsNow } from '../queries/now';
 import { planeWords } from '../../domain/output/plane-words';
-import { siblingsOf, stringFacts, stringNames, type StringFacts } from '../queries/string-facts';
+import { openCaseOf, siblingsOf, stringFacts, stringNames, type StringFacts } from '../queries/string-facts';
 import { dayBounds, energyAgainst, eventsOfString } from '../queries/string-history';
-import { noSuchString } from './string-history';
+import { noSuchString } from './string-axis';
 
 const EVENT_DAYS = 14;
 /** Under this share of what the siblings made, a string is not called short. */
@@ -92,5 +92,7 @@ export async function readString(tx: Tx, ref: string, at: Date, siteRef?: string
       { from: new Date(at.getTime() - EVENT_DAYS * 86_400_000), to: new Date(at.getTime() + 60_000) },
       40,
     ),
+    siblings: (await siblingsOf(tx, facts)).map((s) => ({ id: s.ref, name: s.name })),
+    openCase: await openCaseOf(tx, facts),
   };
 }

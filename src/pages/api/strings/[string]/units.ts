@@ -1,6 +1,6 @@
 import { stringParams, unitsQuery } from '../../../../schemas/api/string';
 import { endpoint } from '../../../../server/http/endpoint';
-import { readUnits } from '../../../../server/services/string-history';
+import { readUnits } from '../../../../server/services/string-units';
 
 export const GET = endpoint(
   { permission: 'string.read', params: stringParams, query: unitsQuery },

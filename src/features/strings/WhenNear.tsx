@@ -1,0 +1,20 @@
+import { Suspense, useRef, type ReactNode } from 'react';
+import { useNear } from '../../components/charts/near';
+
+/** What lies far down the page: its code and its data come when it nears the screen. */
+export function WhenNear({ height, children }: { height: number; children: ReactNode }) {
+  const ref = useRef<HTMLDivElement>(null);
+  const near = useNear(ref);
+  const room = (
+    <div
+      style={{ height }}
+      aria-hidden="true"
+      className="border-b border-t-2 border-b-rule border-t-ink bg-sheet"
+    />
+  );
+  return (
+    <div ref={ref} className="min-w-0">
+      {near ? <Suspense fallback={room}>{children}</Suspense> : room}
+    </div>
+  );
+}
