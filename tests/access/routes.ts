@@ -8,6 +8,7 @@ import { DESIGN_AND_EQUIPMENT } from './routes-equipment';
 import { IMPORT_SERIALS_ROOF } from './routes-import';
 import { HANDOVER } from './routes-handover';
 import { INGEST_LOGGERS_HISTORY } from './routes-ingest';
+import { NOTICES_AND_WEBHOOKS } from './routes-notices';
 import { PEOPLE_AND_ACCOUNTS } from './routes-people';
 import { FIGURES } from './routes-figures';
 import { SHARED_PAGES } from './routes-share';
@@ -26,6 +27,7 @@ export const ROUTES: readonly Route[] = [
   ...INGEST_LOGGERS_HISTORY,
   ...HANDOVER,
   ...PEOPLE_AND_ACCOUNTS,
+  ...NOTICES_AND_WEBHOOKS,
   ...SHARED_PAGES,
   ...WORKBENCH,
   ...FIGURES,
