@@ -14,6 +14,7 @@ const FOREIGN = 'Netloft Terrace';
 const ABSENT = '00000000-0000-4000-8000-000000000000';
 const TOPICS: readonly { kind: string; permission: Permission; of: 'nothing' | 'site' | 'string' }[] = [
   { kind: 'fleet', permission: 'fleet.read', of: 'nothing' },
+  { kind: 'notices', permission: 'notice.read', of: 'nothing' },
   { kind: 'site', permission: 'site.read', of: 'site' },
   { kind: 'string', permission: 'string.read', of: 'string' },
   { kind: 'roll-call', permission: 'roll_call.read', of: 'site' },

@@ -15,6 +15,7 @@ export const AUDIT_AREAS = [
   'shutdown_test',
   'handover',
   'hazard',
+  'webhook',
   'history',
   'settings',
   'tariff',

@@ -121,3 +121,19 @@ export async function customersOf(tx: Tx, siteId: number): Promise<Reader[]> {
   );
   return rows;
 }
+
+/** That papers were made is an event: people and other systems are told of it. */
+export async function addHandoverEvent(
+  tx: Tx,
+  site: { id: number; organisationId: number },
+  detail: { pack: string; version: number; person: string; personId: number },
+  at: Date,
+): Promise<void> {
+  await tx('event').insert({
+    at,
+    organisation_id: site.organisationId,
+    site_id: site.id,
+    kind: 'handover_made',
+    detail: JSON.stringify(detail),
+  });
+}

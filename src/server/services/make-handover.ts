@@ -11,6 +11,7 @@ import { letter } from '../mail/letter';
 import { asBuiltParts } from '../queries/as-built';
 import { commissioningFacts } from '../queries/commissioning-facts';
 import {
+  addHandoverEvent,
   addPack,
   beginOperating,
   customersOf,
@@ -106,6 +107,7 @@ export async function makeHandover(
       stageBecame: began ? 'operating' : site.stage,
     },
   });
+  await addHandoverEvent(tx, site, { pack: ref, version, person: madeBy, personId: actor.personId }, at);
   if (tellCustomers) await tellOf(tx, site, { ref, version });
   if (began) await tellAsBuiltChanged(tx, site.id);
   await tellSiteChanged(tx, site.id);
