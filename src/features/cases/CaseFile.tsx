@@ -76,29 +76,44 @@ export function CaseFile({ initial }: { initial: CasePage }) {
           </Notice>
         </div>
       )}
+      {/* on a phone one column, in the order of what is needed on a roof */}
       <div className="grid items-start gap-6 lg:grid-cols-[minmax(0,1fr)_320px]">
-        <div className="grid min-w-0 gap-6">
-          <WhatSheet hand={hand} editing={editing} onEdit={setEditing} />
-          <ChecklistSheet hand={hand} />
-          <FiguresSheet page={page} />
-          <HistorySheet hand={hand} />
+        <div className="contents lg:grid lg:min-w-0 lg:gap-6">
+          <div className="order-1 min-w-0">
+            <WhatSheet hand={hand} editing={editing} onEdit={setEditing} />
+          </div>
+          <div className="order-3 min-w-0">
+            <ChecklistSheet hand={hand} />
+          </div>
+          <div className="order-5 min-w-0 empty:hidden">
+            <FiguresSheet page={page} />
+          </div>
+          <div className="order-6 min-w-0">
+            <HistorySheet hand={hand} />
+          </div>
         </div>
-        <div className="row-start-1 grid min-w-0 gap-6 lg:row-start-auto">
-          <FactsSheet hand={hand} />
-          <PhotosSheet hand={hand} />
-          <Sheet id="pack" title="For whoever is called next">
-            <p className="mb-3 text-ink-2">
-              What is wrong, the as-built, readings, events, drawings, the checklist as done and photos.
-            </p>
-            <div className="flex flex-wrap gap-2">
-              <ButtonLink href={paths.api.casePack(c.id, 'pdf')} download>
-                Evidence as PDF
-              </ButtonLink>
-              <ButtonLink href={paths.api.casePack(c.id, 'zip')} download>
-                All as ZIP
-              </ButtonLink>
-            </div>
-          </Sheet>
+        <div className="contents lg:grid lg:min-w-0 lg:gap-6">
+          <div className="order-2 min-w-0">
+            <FactsSheet hand={hand} />
+          </div>
+          <div className="order-4 min-w-0">
+            <PhotosSheet hand={hand} />
+          </div>
+          <div className="order-7 min-w-0">
+            <Sheet id="pack" title="For whoever is called next">
+              <p className="mb-3 text-ink-2">
+                What is wrong, the as-built, readings, events, drawings, the checklist as done and photos.
+              </p>
+              <div className="flex flex-wrap gap-2">
+                <ButtonLink href={paths.api.casePack(c.id, 'pdf')} download>
+                  Evidence as PDF
+                </ButtonLink>
+                <ButtonLink href={paths.api.casePack(c.id, 'zip')} download>
+                  All as ZIP
+                </ButtonLink>
+              </div>
+            </Sheet>
+          </div>
         </div>
       </div>
     </>

@@ -1,20 +1,11 @@
 import { useMutation } from '@tanstack/react-query';
 import { useMemo, useState } from 'react';
 import { ButtonLink } from '../../components/ui/Button';
-import { Choice } from '../../components/ui/Choice';
 import { Heading } from '../../components/ui/Heading';
 import { NotRead } from '../../components/ui/NotRead';
 import { Notice } from '../../components/ui/Notice';
-import { SearchInput } from '../../components/ui/SearchInput';
-import { Segmented } from '../../components/ui/Segmented';
 import { Sheet } from '../../components/ui/Sheet';
-import {
-  CASE_KINDS,
-  CASE_KIND_WORDS,
-  CASE_STATE_WORDS,
-  isClosed,
-  type CaseState,
-} from '../../domain/cases/cases';
+import { CASE_STATE_WORDS, isClosed, type CaseState } from '../../domain/cases/cases';
 import { counted } from '../../drawings/numbers';
 import { api, withQuery, type ApiError } from '../../lib/api';
 import { queryClient } from '../../lib/query-client';
@@ -23,6 +14,7 @@ import type { CaseItem, CasesPage, CasesView } from '../../schemas/api/cases';
 import { paths } from '../../schemas/paths';
 import { Board } from './Board';
 import { CaseTable } from './CaseTable';
+import { Filters } from './Filters';
 import { CASES_DEFAULTS, casesFinding, listedCases } from './list';
 import { MoveDialog } from './MoveDialog';
 import { useCases } from './query';
@@ -107,97 +99,27 @@ export function CasesBoard({ initial, view: initialView, timeZone }: Props) {
           </Notice>
         </div>
       )}
-      <form
-        className="no-print mb-4 flex flex-wrap items-center gap-x-4 gap-y-2"
-        onSubmit={(event) => event.preventDefault()}
-      >
-        <Segmented
-          label="Look"
-          options={[
-            { value: 'board', label: 'Board' },
-            { value: 'list', label: 'List' },
-          ]}
-          value={view.look}
-          onChange={(look) => setView({ look })}
-        />
-        <SearchInput
-          label="Search by title, string, person or number"
-          placeholder="Search cases"
-          value={view.q}
-          onChange={(q) => setView({ q }, 'typed')}
-        />
-        <Segmented
-          label="Whose"
-          options={[
-            { value: 'all', label: 'Everybody’s' },
-            { value: 'mine', label: 'Mine' },
-            { value: 'unassigned', label: 'Nobody’s' },
-          ]}
-          value={view.who}
-          onChange={(who) => setView({ who })}
-        />
-        <label className="target inline-flex items-center gap-2 text-sm">
-          <input
-            type="checkbox"
-            checked={view.due === 'overdue'}
-            onChange={(event) => setView({ due: event.target.checked ? 'overdue' : 'all' })}
-            className="h-5 w-5 accent-[var(--petrol)]"
-          />
-          Overdue
-        </label>
-        <Choice
-          inline
-          label="Site"
-          value={view.site}
-          className="max-w-full [&_select]:max-w-[200px]"
-          options={[
-            { value: 'all', label: 'All sites' },
-            ...page.sites.map((s) => ({ value: s.id, label: s.name })),
-          ]}
-          onChange={(site) => setView({ site })}
-        />
-        <Choice
-          inline
-          label="Kind"
-          value={view.kind}
-          className="max-w-full [&_select]:max-w-[200px]"
-          options={[
-            { value: 'all', label: 'All kinds' },
-            ...CASE_KINDS.map((k) => ({ value: k, label: CASE_KIND_WORDS[k] })),
-          ]}
-          onChange={(kind) => setView({ kind: CASE_KINDS.find((k) => k === kind) ?? 'all' })}
-        />
-        <Choice
-          inline
-          label="Closed"
-          value={view.show}
-          options={[
-            { value: 'current', label: 'of the last 30 days' },
-            { value: 'open', label: 'none' },
-            { value: 'all', label: 'all of them' },
-          ]}
-          onChange={(show) => setView({ show: show === 'open' || show === 'all' ? show : 'current' })}
-        />
-        <ButtonLink href={withQuery(paths.api.casesCsv(), { ...view })} download className="ml-auto">
+      <Filters page={page} view={view} onChange={setView} />
+      <div className="mb-3 flex flex-wrap items-center justify-between gap-x-4">
+        <p className="text-sm text-ink-2" role="status">
+          {counted(shown.length, 'case')}
+          {filtered && (
+            <>
+              {` of ${page.cases.length}. `}
+              <button
+                type="button"
+                className="target -my-3 text-petrol underline underline-offset-[3px]"
+                onClick={() => setView({ ...CASES_DEFAULTS, look: view.look, show: view.show })}
+              >
+                Show all
+              </button>
+            </>
+          )}
+        </p>
+        <ButtonLink href={withQuery(paths.api.casesCsv(), { ...view })} download className="!text-sm">
           CSV
         </ButtonLink>
-      </form>
-      <p className="mb-3 text-sm text-ink-2" role="status">
-        {counted(shown.length, 'case')}
-        {filtered && (
-          <>
-            {' '}
-            of {page.cases.length} fit.{' '}
-            <button
-              type="button"
-              className="target -my-3 text-petrol underline underline-offset-[3px]"
-              onClick={() => setView({ ...CASES_DEFAULTS, look: view.look, show: view.show })}
-            >
-              Show all
-            </button>
-          </>
-        )}
-      </p>
+      </div>
       {page.cases.length === 0 ? (
         <Notice
           kind="empty"

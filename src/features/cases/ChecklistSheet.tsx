@@ -42,22 +42,22 @@ export function ChecklistSheet({ hand }: { hand: CaseInHand }) {
 }
 
 function Line({ item, hand }: { item: ChecklistItem; hand: CaseInHand }) {
-  const { page, send } = hand;
+  const { page, send, change } = hand;
   const mark = page.case.checklist.find((m) => m.key === item.key);
   const [note, setNote] = useState<string | null>(null);
-  const mine = send.isPending && send.variables.act === 'check' && send.variables.key === item.key;
+  const sent =
+    send.isPending && send.variables.body.act === 'check' && send.variables.body.key === item.key
+      ? send.variables.body
+      : null;
   const say = (done: boolean, words: string) =>
-    send.mutate(
-      { act: 'check', key: item.key, done, note: words, seen: mark?.at ?? null },
-      { onSuccess: () => setNote(null) },
-    );
+    change({ act: 'check', key: item.key, done, note: words, seen: mark?.at ?? null }, () => setNote(null));
   return (
     <li className="py-2.5">
       <label className="flex min-h-[44px] cursor-pointer items-start gap-3">
         <input
           type="checkbox"
-          checked={mark?.done ?? false}
-          disabled={mine}
+          checked={sent?.done ?? mark?.done ?? false}
+          disabled={sent !== null}
           onChange={(event) => say(event.target.checked, note ?? mark?.note ?? '')}
           className="mt-0.5 h-6 w-6 shrink-0 accent-[var(--petrol)]"
         />
@@ -101,7 +101,7 @@ function Line({ item, hand }: { item: ChecklistItem; hand: CaseInHand }) {
             className="min-w-[200px] flex-1"
             onChange={(event) => setNote(event.target.value)}
           />
-          <Button type="submit" disabled={mine}>
+          <Button type="submit" disabled={sent !== null}>
             Keep the note
           </Button>
         </form>

@@ -1,5 +1,6 @@
 import { useMutation } from '@tanstack/react-query';
 import { useId, useRef, useState, type KeyboardEvent } from 'react';
+import { flushSync } from 'react-dom';
 import { Button } from '../../components/ui/Button';
 import { mentionAt, mentionChoices, mentionedIn, withMention } from '../../domain/cases/mentions';
 import { api, type ApiError } from '../../lib/api';
@@ -42,13 +43,14 @@ export function CommentBox({ hand }: { hand: CaseInHand }) {
 
   const pick = (name: string) => {
     const next = withMention(text, cursor, name);
-    setText(next.text);
-    setCursor(next.cursor);
-    setChosen(0);
-    requestAnimationFrame(() => {
-      area.current?.focus();
-      area.current?.setSelectionRange(next.cursor, next.cursor);
+    // at once: whoever types on must not find the cursor moved under the next letter
+    flushSync(() => {
+      setText(next.text);
+      setCursor(next.cursor);
+      setChosen(0);
     });
+    area.current?.focus();
+    area.current?.setSelectionRange(next.cursor, next.cursor);
   };
   const onKey = (event: KeyboardEvent) => {
     if (event.key === 'Enter' && (event.ctrlKey || event.metaKey) && text.trim()) {

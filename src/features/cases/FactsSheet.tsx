@@ -20,23 +20,18 @@ import { dueWords } from './words';
 
 /** State, person, day: what changes most, in reach of a thumb. */
 export function FactsSheet({ hand }: { hand: CaseInHand }) {
-  const { page, send } = hand;
+  const { page, send, change } = hand;
   const c = page.case;
   const [closing, setClosing] = useState<CaseState | null>(null);
-  const [closed, setClosed] = useState(c.version);
-  // a version newer than the one that the dialog was opened over: it was written
-  if (closing && c.version !== closed && c.state === closing) setClosing(null);
   const facts = (some: {
     assignee?: string | null;
     dueOn?: string | null;
     kind?: (typeof CASE_KINDS)[number];
-  }) => send.mutate({ act: 'facts', version: c.version, ...some });
+  }) => change({ act: 'facts', version: c.version, ...some });
   const move = (to: CaseState) => {
     send.reset();
-    if (isClosed(to)) {
-      setClosed(c.version);
-      setClosing(to);
-    } else send.mutate({ act: 'state', version: c.version, state: to, note: '' });
+    if (isClosed(to)) setClosing(to);
+    else change({ act: 'state', version: c.version, state: to, note: '' });
   };
   return (
     <Sheet id="facts" title="Where it stands">
@@ -97,7 +92,10 @@ export function FactsSheet({ hand }: { hand: CaseInHand }) {
         move={closing && { number: c.number, to: closing }}
         fault={send.error?.fault('note') ?? (hand.meanwhile ? null : (send.error?.message ?? null))}
         busy={send.isPending}
-        onMove={(note) => closing && send.mutate({ act: 'state', version: c.version, state: closing, note })}
+        onMove={(note) =>
+          closing &&
+          change({ act: 'state', version: c.version, state: closing, note }, () => setClosing(null))
+        }
         onClose={() => {
           setClosing(null);
           hand.forget();

@@ -1,5 +1,6 @@
 import { Sheet } from '../../components/ui/Sheet';
 import { Tag } from '../../components/ui/Tag';
+import type { FiguresString } from '../../domain/cases/figures';
 import { CHECK_OUTCOME_WORDS } from '../../domain/cases/cases';
 import { comparedFigures, staircaseOf } from '../../drawings/case-figures';
 import { Staircase } from '../../drawings/Staircase';
@@ -67,13 +68,32 @@ export function FiguresSheet({ page }: { page: CasePage }) {
             <figcaption className="mb-1 text-sm text-ink-2">
               String {then.name}: volts along its positions{now ? ', before and after' : ''}
             </figcaption>
-            <div className={now ? 'grid gap-4 lg:grid-cols-2' : ''}>
-              <Staircase id={`before-${then.id}`} {...staircaseOf(then)} width={560} height={260} />
-              {now && <Staircase id={`after-${then.id}`} {...staircaseOf(now)} width={560} height={260} />}
+            <div className={now ? 'grid gap-4 xl:grid-cols-2' : ''}>
+              <Drawn id={`before-${then.id}`} string={then} half={now !== undefined} />
+              {now && <Drawn id={`after-${then.id}`} string={now} half />}
             </div>
           </figure>
         );
       })}
     </Sheet>
+  );
+}
+
+/** One staircase, drawn for the width that it has: its words stay readable on a phone. */
+function Drawn({ id, string, half }: { id: string; string: FiguresString; half: boolean }) {
+  const input = staircaseOf(string);
+  return (
+    <div>
+      <Staircase
+        id={`${id}-wide`}
+        className="hidden sm:block"
+        {...input}
+        width={half ? 560 : 880}
+        height={270}
+      />
+      <div className="sm:hidden">
+        <Staircase id={`${id}-narrow`} {...input} width={340} height={230} />
+      </div>
+    </div>
   );
 }

@@ -50,16 +50,26 @@ export function WhatSheet({
 }
 
 function EditForm({ hand, onDone }: { hand: CaseInHand; onDone: () => void }) {
-  const { page, send } = hand;
-  const [title, setTitle] = useState(page.case.title);
-  const [what, setWhat] = useState(page.case.what);
+  const { page, send, change } = hand;
+  // what was there when it was opened: only what this person changed is sent, so that nobody else's words are undone
+  const [began] = useState({ title: page.case.title, what: page.case.what });
+  const [title, setTitle] = useState(began.title);
+  const [what, setWhat] = useState(began.what);
   return (
     <form
       className="grid gap-4"
       noValidate
       onSubmit={(event) => {
         event.preventDefault();
-        send.mutate({ act: 'facts', version: page.case.version, title, what }, { onSuccess: onDone });
+        change(
+          {
+            act: 'facts',
+            version: page.case.version,
+            ...(title === began.title ? {} : { title }),
+            ...(what === began.what ? {} : { what }),
+          },
+          onDone,
+        );
       }}
     >
       <Field

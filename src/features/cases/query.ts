@@ -31,6 +31,11 @@ export interface Meanwhile {
   again: () => void;
 }
 
+interface Sent {
+  body: CaseChangeBody;
+  done?: () => void;
+}
+
 const isMeanwhile = (value: unknown): value is { page: CasePage; since: CaseEntry[] } =>
   typeof value === 'object' && value !== null && 'page' in value && 'since' in value;
 
@@ -59,18 +64,23 @@ export function useCase(initial: CasePage) {
     if (how === 'delta' && change.events?.some((e) => e.kind.startsWith('case_')))
       void client.invalidateQueries({ queryKey: caseKey(id) });
   });
-  const send = useMutation<CasePage, ApiError, CaseChangeBody>(
+  const send = useMutation<CasePage, ApiError, Sent>(
     {
-      mutationFn: (body) => api<CasePage>(paths.api.caseFile(id), { method: 'PATCH', body }),
-      onSuccess: (page) => {
+      mutationFn: ({ body }) => api<CasePage>(paths.api.caseFile(id), { method: 'PATCH', body }),
+      onSuccess: (page, { done }) => {
         setMeanwhile(null);
         take(page);
+        done?.();
       },
-      onError: (error, body) => {
+      onError: (error, { body, done }) => {
         if (error.status !== 409 || !isMeanwhile(error.current)) return;
         const { page, since } = error.current;
         take(page);
-        setMeanwhile({ message: error.message, since, again: () => send.mutate(rebased(body, page)) });
+        setMeanwhile({
+          message: error.message,
+          since,
+          again: () => send.mutate({ body: rebased(body, page), done }),
+        });
       },
     },
     client,
@@ -82,6 +92,8 @@ export function useCase(initial: CasePage) {
     status,
     take,
     send,
+    /** Sends a change; `done` runs once it is written, also when it had to be sent again. */
+    change: (body: CaseChangeBody, done?: () => void) => send.mutate({ body, done }),
     meanwhile,
     forget: () => {
       setMeanwhile(null);

@@ -11,12 +11,16 @@ import { clocksDiffer, useReaderZone } from '../../components/ui/reader-zone';
 import { useLive } from '../../lib/live-hook';
 import { queryClient } from '../../lib/query-client';
 import { useViewInUrl } from '../../lib/view-in-url';
+import type { CaseItem } from '../../schemas/api/cases';
+import type { SiteStanding } from '../../schemas/api/causes';
 import type { EventsPage, SitePage } from '../../schemas/api/site';
 import { paths } from '../../schemas/paths';
+import { CasesSheet } from './CasesSheet';
 import { EventsSheet } from './EventsSheet';
 import { InvertersSheet } from './InvertersSheet';
 import { NowSheet } from './NowSheet';
 import { RadioSheet } from './RadioSheet';
+import { StandingSheet } from './StandingSheet';
 import { StringsSheet } from './StringsSheet';
 import { ZonesSheet } from './ZonesSheet';
 import { siteFinding } from './finding';
@@ -36,10 +40,13 @@ interface Props {
   initial: SitePage;
   events: EventsPage;
   kind: KindWanted;
+  /** Cases here that are not closed. */
+  cases: readonly CaseItem[];
+  standing: SiteStanding;
 }
 const DEFAULTS: { kind: KindWanted } = { kind: 'all' };
 
-export function SiteBoard({ initial, events, kind: initialKind }: Props) {
+export function SiteBoard({ initial, events, kind: initialKind, cases, standing }: Props) {
   const client = queryClient();
   const { id, timeZone } = initial.site;
   const { data: page, error, refetch } = useQuery(siteQuery(initial), client);
@@ -90,7 +97,14 @@ export function SiteBoard({ initial, events, kind: initialKind }: Props) {
         >
           Figures
         </a>
+        <a
+          className="target inline-flex items-center text-petrol hover:underline"
+          href={paths.plannedWorks(id)}
+        >
+          Planned works
+        </a>
       </nav>
+      <StandingSheet siteId={id} standing={standing} now={now} timeZone={timeZone} />
       <NotRead
         error={error}
         title="The site could not be read anew"
@@ -132,6 +146,7 @@ export function SiteBoard({ initial, events, kind: initialKind }: Props) {
       </div>
       <div className="space-y-6">
         <NowSheet page={page} now={now} zone={zone} />
+        <CasesSheet site={id} initial={cases} />
         <ZonesSheet zones={page.zones} now={now} timeZone={timeZone} zone={zone} />
         <StringsSheet site={id} strings={page.strings} />
         <TraceSheet siteId={id} timeZone={timeZone} />

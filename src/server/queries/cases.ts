@@ -202,10 +202,13 @@ export async function reportedBy(tx: Tx, siteId: number, personId: number): Prom
   return rows.map((r) => ({ ...r, at: r.at.toISOString(), closedAt: r.closedAt?.toISOString() ?? null }));
 }
 
-/** Events of the strings of a case and those of the whole site, newest first; what another supersedes is left out. */
+/**
+ * Events of the strings of a case and those of the whole site, newest first; what another supersedes is left out, and
+ * what happened to other cases.
+ */
 export async function eventsOfCase(
   tx: Tx,
-  wanted: { siteId: number; strings: readonly string[]; from: Date; to: Date; limit: number },
+  wanted: { ref: string; siteId: number; strings: readonly string[]; from: Date; to: Date; limit: number },
 ): Promise<EventItem[]> {
   const { rows } = await tx.raw<{
     rows: (Omit<EventItem, 'at' | 'recordedAt'> & { at: Date; recordedAt: Date })[];
@@ -215,6 +218,7 @@ export async function eventsOfCase(
      from event e join site on site.id = e.site_id left join string s on s.id = e.string_id
      where e.site_id = :siteId and ${SITE_VISIBLE} and e.at >= :from and e.at <= :to
        and (e.string_id is null or s.ref = any (cast(:strings as uuid[])) or cardinality(cast(:strings as uuid[])) = 0)
+       and (e.detail ->> 'case' is null or e.detail ->> 'case' = :ref)
        and not exists (select from event newer where newer.supersedes = e.id)
      order by e.at desc, e.id desc limit :limit`,
     { ...wanted, strings: [...wanted.strings] },

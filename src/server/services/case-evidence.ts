@@ -67,6 +67,7 @@ async function gather(tx: Tx, actor: Actor, ref: string, at: Date): Promise<Gath
     more: c.strings.slice(STRINGS_SHOWN).map((s) => s.name),
     meterReadings: built.readings.filter((r) => names.size === 0 || names.has(r.string)),
     events: await eventsOfCase(tx, {
+      ref,
       siteId: site.id,
       strings: c.strings.map((s) => s.id),
       from: new Date(opened - EVENT_DAYS.before * DAY_MS),
