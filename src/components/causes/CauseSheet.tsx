@@ -3,6 +3,7 @@ import { energy, percent } from '../../drawings/numbers';
 import { fullTime } from '../../drawings/times';
 import type { Acknowledgement, AcknowledgeReply, SiteContact } from '../../schemas/api/fleet';
 import type { CauseNow } from '../../schemas/api/now';
+import { withQuery } from '../../lib/api';
 import { paths } from '../../schemas/paths';
 import { StateTag } from '../states/StateTag';
 import { Tag } from '../ui/Tag';
@@ -103,6 +104,14 @@ export function CauseSheet({
             It could also be: {alternativesInWords(cause.alternatives)}.
           </p>
         )}
+        <p className="no-print mt-1">
+          <a
+            href={withQuery(paths.causes(), { site: cause.siteId, kind: cause.verdict })}
+            className="target inline-flex items-center text-sm text-petrol hover:underline"
+          >
+            Evidence, history, what to check first
+          </a>
+        </p>
         {isHazard(cause) && (
           <Acknowledge
             cause={cause}

@@ -113,7 +113,7 @@ export function evidenceWords(
   if (items.length === 1 && only !== undefined && cause.mode === 'unit') {
     const others = only.string.slots.filter((s) => s.verdict === 'ok' && s.position !== only.slot?.position);
     sentences.push(
-      `Its ${count(others.length, 'neighbour', 'neighbours')} in ${only.string.name} as expected; it alone is ${SHOWN[verdict]}.`,
+      `Its ${count(others.length, 'neighbour', 'neighbours')} in ${only.string.name} ${others.length === 1 ? 'does' : 'do'} as expected; it alone is ${SHOWN[verdict]}.`,
     );
   } else if (items.some((i) => i.slot !== null))
     sentences.push(

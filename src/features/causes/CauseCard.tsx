@@ -121,7 +121,10 @@ export function CauseCard({ cause }: { cause: CausePage }) {
         </Sheet>
       </div>
       <div className="grid min-w-0 gap-5">
-        <Sheet id="units" title={cause.sharedPart ? `Shared: ${partName(cause.sharedPart)}` : 'Where'}>
+        <Sheet
+          id="units"
+          title={isShared(cause.sharedPart) ? `What they share: ${partName(cause.sharedPart)}` : 'Where'}
+        >
           <Units cause={cause} />
         </Sheet>
         <Sheet id="loss" title="What it costs">
@@ -179,5 +182,8 @@ export function CauseCard({ cause }: { cause: CausePage }) {
   );
 }
 
+/** A unit or a string explains only itself. */
+const isShared = (part: CausePage['sharedPart']): part is NonNullable<CausePage['sharedPart']> =>
+  part !== null && part.kind !== 'unit' && part.kind !== 'string';
 const partName = (part: { kind: string; name: string }): string =>
   part.name.toLowerCase().includes(part.kind) ? part.name : `${part.kind} ${part.name}`;

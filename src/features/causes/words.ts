@@ -50,7 +50,7 @@ export function listFinding(page: CausesPage): { finding: string; sentence: stri
   const hazards = open.filter((c) => c.hazard);
   if (hazards.length > 0)
     return {
-      finding: `${countAtStart(hazards.length)} ${hazards.length === 1 ? 'cause' : 'causes'} of units that do not shut down, ${atSites(hazards)}`,
+      finding: `${hazardSubject(hazards)} ${atSites(hazards)}`,
       sentence: 'Treat every string there as live and call the site before anything else.',
     };
   if (open.length === 0)
@@ -68,6 +68,15 @@ export function listFinding(page: CausesPage): { finding: string; sentence: stri
         ? `Together they cost about ${energy(perDay)} a day. The gravest come first.`
         : 'The gravest come first.',
   };
+}
+
+/** "Two units do not shut down": units where they are known, else strings. */
+function hazardSubject(hazards: readonly CauseItem[]): string {
+  const all = hazards.flatMap((c) => c.units);
+  const units = all.filter((u) => u.position !== null).length;
+  const n = units > 0 ? units : new Set(all.map((u) => u.stringId)).size;
+  const one = units > 0 ? 'unit' : 'string';
+  return `${countAtStart(n)} ${n === 1 ? `${one} does` : `${one}s do`} not shut down`;
 }
 
 export const filtered = ({ view }: Pick<CausesPage, 'view'>): boolean =>

@@ -150,10 +150,11 @@ export function JobsPage({ initial, timeZone }: { initial: Page; timeZone: strin
         <Sheet id="failures" title="Failures of the last days" className="mt-5">
           <ul className="divide-y divide-rule-faint">
             {page.failures.map((f) => (
-              <li key={`${f.task} ${f.startedAt}`} className="py-2">
+              <li key={`${f.task} ${f.siteName ?? ''} ${f.startedAt}`} className="py-2">
                 <p className="text-sm text-ink-2">
                   <SiteTime at={f.startedAt} now={page.at} timeZone={timeZone} /> · {f.title}
-                  {f.siteName && `, ${f.siteName}`} · try {f.attempt}
+                  {f.siteName && `, ${f.siteName}`}
+                  {f.times > 1 && ` · ${f.times} times, the newest`}
                 </p>
                 <p className="break-words">{f.failed}</p>
               </li>

@@ -2,6 +2,7 @@ import { z } from 'zod';
 import { CAUSE_KINDS, type CauseKind } from '../../domain/causes/kinds';
 import type { EventItem } from './now';
 import type { SiteContact } from './fleet';
+import type { PlannedWorkItem } from './planned-works';
 
 /** Causes as they are written down. Energy in Wh; times ISO 8601 in UTC. */
 
@@ -73,4 +74,11 @@ export interface CausePage extends CauseItem {
   /** What to look at before calling anybody. */
   checks: { check: string; why: string; caution: string | null }[];
   checksSource: string;
+}
+
+/** What a site's page shows beside the moment. */
+export interface SiteStanding {
+  works: PlannedWorkItem[];
+  /** Open causes that days show, not minutes. */
+  daily: Pick<CauseItem, 'id' | 'headline' | 'since' | 'lossWhDay'>[];
 }

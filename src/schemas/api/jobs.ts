@@ -47,7 +47,7 @@ export interface JobsPage {
   at: string;
   kinds: JobKindLine[];
   failing: FailingJob[];
-  failures: (JobRun & { task: string; title: string })[];
+  failures: (JobRun & { task: string; title: string; times: number })[];
   /** The queue could not be read: no worker ever ran against this database. */
   noQueue: boolean;
 }

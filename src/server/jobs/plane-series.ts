@@ -34,6 +34,8 @@ export interface NightString {
   /** V and A by unit. */
   voltage: Float64Array[];
   current: Float64Array[];
+  /** V over the string. */
+  sumV: Float64Array;
   /** V of the module side, of optimizing units. */
   voltageIn: Float64Array[] | null;
   typicalA: Float64Array;
@@ -85,6 +87,7 @@ export async function readNightSeries(
     voltage: Array.from({ length: string.slots }, () => nans(steps)),
     current: Array.from({ length: string.slots }, () => nans(steps)),
     voltageIn: null,
+    sumV: nans(steps),
     typicalA: nans(steps),
     excluded: excluded.get(string.id) ?? new Uint8Array(steps),
   }));
@@ -96,10 +99,11 @@ export async function readNightSeries(
     const n = byId.get(row.stringId);
     const q = stepOf(row.atS);
     // arrays of another length are of another as-built
-    if (!n || row.frames < least || row.voltage.length !== n.string.slots) continue;
-    take(n, row, q);
+    if (!n || row.frames < least || (row.voltage && row.voltage.length !== n.string.slots)) continue;
     const minutes = Math.min(15, (row.frames * site.reportIntervalS) / 60);
-    energy.get(row.stringId)![q] = row.energy / 10 / minutes;
+    const watts = row.energy / 10 / minutes;
+    energy.get(row.stringId)![q] = watts;
+    take(n, row, q, watts);
   }
   await takeInputSides(tx, night, span, stepOf);
   const inputs = await readInputs(tx, strings, span, steps, stepOf, least);
@@ -119,7 +123,7 @@ export async function readNightSeries(
       const input = inputs.get(string.inputId);
       const alone = strings.filter((s) => s.inputId === string.inputId).length === 1;
       const tells = string.measures !== 'input';
-      const voltage = tells ? sums(n.voltage, steps) : alone && input ? input.voltage : nans(steps);
+      const voltage = tells ? n.sumV : alone && input ? input.voltage : nans(steps);
       // of units that tell their module's side only, what passes is known by their claims alone
       const power = tells ? Float64Array.from(voltage, (v, q) => v * n.typicalA[q]!) : energy.get(string.id)!;
       return [[seriesOf(string, 'string', { voltage, current: n.typicalA, power }, n.excluded), [string]]];
@@ -175,15 +179,25 @@ function gridOf(
   return { dayOf, sunAzimuth };
 }
 
-function take(n: NightString, row: QuarterRow, q: number): void {
+function take(n: NightString, row: QuarterRow, q: number, watts: number): void {
+  const { voltage, current } = row;
+  if (voltage === null || current === null) {
+    // older days are kept of whole strings only
+    n.sumV[q] = row.voltageAvg / 100;
+    n.typicalA[q] = row.voltageAvg > 0 ? watts / n.sumV[q] : NaN;
+    return;
+  }
   const known: number[] = [];
-  row.voltage.forEach((cV, u) => {
-    const mA = row.current[u];
+  let sum = 0;
+  voltage.forEach((cV, u) => {
+    const mA = current[u];
+    sum += cV === null ? NaN : cV / 100;
     if (cV !== null) n.voltage[u]![q] = cV / 100;
     if (mA === null || mA === undefined) return;
     n.current[u]![q] = mA / 1000;
     known.push(mA / 1000);
   });
+  n.sumV[q] = sum;
   if (known.length >= n.string.slots / 2) n.typicalA[q] = median(known);
 }
 
@@ -238,10 +252,6 @@ async function readInputs(
   }
   return columns;
 }
-
-/** Sum over a string's units; NaN where one of them is not known. */
-const sums = (columns: readonly Float64Array[], steps: number): Float64Array =>
-  Float64Array.from({ length: steps }, (_, q) => columns.reduce((sum, c) => sum + c[q]!, 0));
 
 function seriesOf(
   s: OutputString,

@@ -79,10 +79,13 @@ export async function lastRuns(tx: Tx, at: Date): Promise<{ last: RunRow[]; coun
   return { last: last.rows, counts: counts.rows };
 }
 
-/** The newest failures that the actor may see. */
-export async function failedRuns(tx: Tx, limit: number): Promise<RunRow[]> {
-  const { rows } = await tx.raw<{ rows: RunRow[] }>(
-    `select ${RUN} from (select * from job_run where failed is not null and ${SEEN}) r left join site on site.id = r.site_id
+/** What failed and how often, the newest first: one row a task, site and error. */
+export async function failedRuns(tx: Tx, limit: number): Promise<(RunRow & { times: number })[]> {
+  const { rows } = await tx.raw<{ rows: (RunRow & { times: number })[] }>(
+    `select ${RUN}, r.times
+     from (select distinct on (task, site_id, failed) *, (count(*) over (partition by task, site_id, failed))::int as times
+           from job_run where failed is not null and ${SEEN} order by task, site_id, failed, started_at desc) r
+     left join site on site.id = r.site_id
      order by r.started_at desc limit ?`,
     [limit],
   );

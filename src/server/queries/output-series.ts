@@ -58,9 +58,11 @@ export interface QuarterRow {
   frames: number;
   /** dW·min */
   energy: number;
-  /** cV, mA, in slot order. */
-  voltage: (number | null)[];
-  current: (number | null)[];
+  /** cV, of the string. */
+  voltageAvg: number;
+  /** cV, mA, in slot order; null: single units were not kept. */
+  voltage: (number | null)[] | null;
+  current: (number | null)[] | null;
 }
 
 export async function stringQuarters(
@@ -69,7 +71,8 @@ export async function stringQuarters(
   span: Span,
 ): Promise<QuarterRow[]> {
   const { rows } = await tx.raw<{ rows: QuarterRow[] }>(
-    `select extract(epoch from at)::float8 as "atS", string_id as "stringId", frames, energy, unit_voltage as voltage,
+    `select extract(epoch from at)::float8 as "atS", string_id as "stringId", frames, energy,
+            voltage_avg as "voltageAvg", unit_voltage as voltage,
             unit_current as current
      from string_quarter where string_id = any (:ids::int4[]) and at >= :from and at < :to`,
     { ids: [...stringIds], ...span },

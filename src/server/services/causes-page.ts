@@ -1,10 +1,13 @@
 import { caseKindOf } from '../../domain/cases/cases';
 import { CHECKLIST_SOURCE, checklistOf } from '../../domain/cases/checklists';
-import type { CausePage, CausesPage, CausesView } from '../../schemas/api/causes';
+import { DAILY_KINDS, type CauseKind } from '../../domain/causes/kinds';
+import type { CausePage, CausesPage, CausesView, SiteStanding } from '../../schemas/api/causes';
 import type { Tx } from '../db/transaction';
 import { found } from '../errors';
 import { causeEvents, currencyOf, listCauses, oneCause, sitesWithCauses } from '../queries/causes-list';
 import { contactsOf } from '../queries/fleet';
+import { worksAhead } from '../queries/planned-works';
+import { visibleSite } from '../queries/visible-site';
 
 const SHOWN_MAX = 300;
 
@@ -40,5 +43,22 @@ export async function causePage(tx: Tx, ref: string, at: Date): Promise<CausePag
       caution: caution ?? null,
     })),
     checksSource: CHECKLIST_SOURCE,
+  };
+}
+
+/**
+ * Works that go on or come at a site, and the open causes that its days show.
+ * @throws AppError not_found
+ */
+export async function siteStanding(tx: Tx, siteRef: string, at: Date): Promise<SiteStanding> {
+  const site = found(await visibleSite(tx, siteRef), 'site');
+  const view: CausesView = { show: 'open', kind: 'any', site: siteRef, q: '', sort: 'gravity' };
+  const causes = await listCauses(tx, view, null, SHOWN_MAX);
+  const daily: readonly CauseKind[] = DAILY_KINDS;
+  return {
+    works: await worksAhead(tx, site.id, at),
+    daily: causes
+      .filter((c) => daily.includes(c.kind))
+      .map(({ id, headline, since, lossWhDay }) => ({ id, headline, since, lossWhDay })),
   };
 }

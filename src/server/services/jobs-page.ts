@@ -116,6 +116,7 @@ export async function jobsPage(tx: Tx, at: Date): Promise<JobsPage> {
       task: r.task,
       title: titleOf(r.task),
       failed: firstLine(r.failed ?? ''),
+      times: r.times,
     })),
     noQueue: seen === null,
   };

@@ -1,0 +1,55 @@
+import { Notice } from '../../components/ui/Notice';
+import { Sheet } from '../../components/ui/Sheet';
+import { SiteTime } from '../../components/ui/Time';
+import { energy } from '../../drawings/numbers';
+import { withQuery } from '../../lib/api';
+import type { SiteStanding } from '../../schemas/api/causes';
+import { paths } from '../../schemas/paths';
+
+interface Props {
+  siteId: string;
+  standing: SiteStanding;
+  now: string;
+  timeZone: string;
+}
+
+/** What stands beside the moment: works that go on or come, and what the nights have found. */
+export function StandingSheet({ siteId, standing, now, timeZone }: Props) {
+  const { works, daily } = standing;
+  const going = works.filter((w) => w.startsAt <= now && w.endsAt > now);
+  return (
+    <>
+      {going.map((w) => (
+        <div key={w.id} className="mb-4">
+          <Notice kind="stale" title={`Planned works: ${w.reason}`}>
+            {w.strings === null ? 'At the whole site' : `At ${w.strings.join(', ')}`} until{' '}
+            <SiteTime at={w.endsAt} now={now} timeZone={timeZone} />. What happens there is no alarm until
+            then; units that don’t shut down are. <a href={paths.plannedWorks(siteId)}>Planned works</a>
+          </Notice>
+        </div>
+      ))}
+      {daily.length > 0 && (
+        <Sheet
+          id="nights-found"
+          title="What the nights have found"
+          className="mb-6"
+          aside={<a href={withQuery(paths.causes(), { site: siteId })}>all causes here</a>}
+        >
+          <ul className="divide-y divide-rule-faint">
+            {daily.map((c) => (
+              <li key={c.id} className="flex flex-wrap items-baseline justify-between gap-x-4 py-1">
+                <a href={paths.cause(c.id)} className="target flex items-center text-petrol hover:underline">
+                  {c.headline}
+                </a>
+                <span className="text-sm text-ink-2">
+                  since <SiteTime at={c.since} now={now} timeZone={timeZone} />
+                  {c.lossWhDay !== null && c.lossWhDay >= 1 && ` · ${energy(c.lossWhDay)} a day`}
+                </span>
+              </li>
+            ))}
+          </ul>
+        </Sheet>
+      )}
+    </>
+  );
+}
