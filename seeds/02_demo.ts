@@ -4,6 +4,7 @@ import { seedHistory } from './history/fleet-history';
 import { clearFleet } from './plant/clear';
 import { seedPlant } from './plant/seed-plant';
 import { seedCommissioningRecords } from './records/commissioning';
+import { seedPrices } from './records/prices';
 
 export const DEMO_PASSWORD = 'roof-ladder-meter';
 
@@ -27,6 +28,7 @@ export async function seed(knex: Knex): Promise<void> {
     const fleet = demoFleet(DEMO_SEED, since);
     const plant = await seedPlant(tx, fleet, { secret, password: DEMO_PASSWORD });
     await seedCommissioningRecords(tx, plant, since);
+    await seedPrices(tx);
     await seedHistory(tx, fleet, plant, (line) => console.log(line));
   });
   // All but the frames: those are only ever read by string and time, and statistics of their arrays cost seconds.

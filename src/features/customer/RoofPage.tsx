@@ -167,6 +167,13 @@ export function RoofPage({ initial }: { initial: CustomerSite }) {
             <p className="mt-2 text-ink-2">{switchWords(site)}</p>
           </Sheet>
           <Sheet id="care" title="Who looks after it">
+            {care.logo && (
+              <img
+                src={paths.api.logo(care.logo)}
+                alt={care.organisation}
+                className="mb-3 max-h-[56px] max-w-[220px] bg-[#fff]"
+              />
+            )}
             <p>{careWords(care)}</p>
             {phone && (
               <p className="mt-2">

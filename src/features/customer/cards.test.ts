@@ -108,10 +108,12 @@ describe('the switch and who looks after it', () => {
       );
   });
   it('says who looks after the roof, and when no number is recorded', () => {
-    expect(careWords({ organisation: 'Lowfield Solar Works', phone: '1' })).toBe(
+    expect(careWords({ organisation: 'Lowfield Solar Works', phone: '1', logo: null })).toBe(
       'Lowfield Solar Works looks after this roof.',
     );
-    expect(careWords({ organisation: 'Lowfield Solar Works', phone: '' })).toContain('no telephone number');
+    expect(careWords({ organisation: 'Lowfield Solar Works', phone: '', logo: null })).toContain(
+      'no telephone number',
+    );
   });
   it('writes plain days without a zone', () => {
     expect(dayWords('2026-03-12')).toBe('12 March 2026');

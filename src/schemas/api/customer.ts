@@ -53,7 +53,11 @@ export const customerSite = z.object({
     strings: z.int(),
     ruleSet: z.enum(['rapid_shutdown_30s', 'rapid_shutdown_10s', 'hazard_control', 'none']),
   }),
-  care: z.object({ organisation: z.string(), phone: z.string() }),
+  care: z.object({
+    organisation: z.string(),
+    phone: z.string(),
+    logo: z.string().nullable(), // changes when the logo does
+  }),
   now: customerNow,
   today: z.object({
     day,

@@ -20,6 +20,7 @@ export interface RoofRow {
   organisation: string;
   organisationPhone: string | null;
   currency: string | null;
+  logo: string | null;
   strings: number;
   modules: number;
   reporting: number;
@@ -47,6 +48,7 @@ export async function roofRows(tx: Tx, at: Date, ref?: string): Promise<RoofRow[
             site.latitude, site.longitude, site.altitude, site.switched_on_on::text as "switchedOnOn",
             site.shutdown_switch_place as "shutdownSwitchPlace", site.rule_set as "ruleSet",
             o.name as organisation, o.phone as "organisationPhone", o.currency,
+            (select a.ref::text from attachment a where a.id = o.logo_id) as logo,
             (select count(*)::int from string s where s.site_id = site.id) as strings,
             built.modules, built.reporting,
             (select count(*)::int from string_judgement j

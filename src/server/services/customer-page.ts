@@ -182,7 +182,7 @@ export async function customerSite(tx: Tx, ref: string, at: Date): Promise<Custo
       strings: roof.strings,
       ruleSet: roof.ruleSet,
     },
-    care: { organisation: roof.organisation, phone: roof.organisationPhone ?? '' },
+    care: { organisation: roof.organisation, phone: roof.organisationPhone ?? '', logo: roof.logo },
     now: nowOf(roof, found(site, 'site'), at),
     today,
     month: {

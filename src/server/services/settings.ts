@@ -145,6 +145,9 @@ export async function saveLogo(
   return readSettings(tx);
 }
 
+/** PNG; null: none is set. */
+export const organisationLogo = async (tx: Tx): Promise<Buffer | null> => (await logoBytes(tx))?.data ?? null;
+
 /** The actor's organisation's logo as a reply. @throws AppError not_found */
 export async function logoReply(tx: Tx): Promise<Response> {
   const logo = found(await logoBytes(tx), 'logo');

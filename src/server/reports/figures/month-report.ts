@@ -8,9 +8,12 @@ import { fingerprintOf } from '../fingerprint';
 import { Paper } from '../pdf/paper';
 import { siteWords, type SiteWords } from './words';
 
-/** A month on paper: what was made, where the rest went, day by day, and what was wrong. */
-export async function monthReport(f: SiteFigures): Promise<Response> {
-  const bytes = await monthReportPdf(f);
+/**
+ * A month on paper: what was made, where the rest went, day by day, and what was wrong.
+ * @param logo of the organisation, PNG
+ */
+export async function monthReport(f: SiteFigures, logo: Buffer | null): Promise<Response> {
+  const bytes = await monthReportPdf(f, logo);
   return new Response(new Uint8Array(bytes), {
     headers: {
       'content-type': 'application/pdf',
@@ -21,7 +24,7 @@ export async function monthReport(f: SiteFigures): Promise<Response> {
   });
 }
 
-export async function monthReportPdf(f: SiteFigures): Promise<Buffer> {
+export async function monthReportPdf(f: SiteFigures, logo: Buffer | null = null): Promise<Buffer> {
   const at = new Date(f.at);
   const words = siteWords(f);
   const date = longDate(at, f.site.timeZone);
@@ -35,6 +38,10 @@ export async function monthReportPdf(f: SiteFigures): Promise<Buffer> {
     },
   );
   paper.space(10);
+  if (logo)
+    paper.figure(44, (x, y) => {
+      paper.pen.image(logo, x, y, { fit: [150, 36] });
+    });
   paper.text(`${f.site.organisation} · month report`, { size: 11, colour: PAPER.ink2 });
   paper.text(words.finding, { size: 22, weight: 600, leading: 1.2 });
   paper.text(words.sentence, { size: 11.5, colour: PAPER.ink2 });

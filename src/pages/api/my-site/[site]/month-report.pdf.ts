@@ -2,9 +2,11 @@ import { monthQuery } from '../../../../schemas/api/figures';
 import { siteParams } from '../../../../schemas/api/site';
 import { endpoint } from '../../../../server/http/endpoint';
 import { monthReport } from '../../../../server/reports/figures/month-report';
+import { organisationLogo } from '../../../../server/services/settings';
 import { siteFigures } from '../../../../server/services/figures';
 
 export const GET = endpoint(
   { permission: 'papers.read', params: siteParams, query: monthQuery },
-  async ({ tx, params, query }) => monthReport(await siteFigures(tx, params.site, query.month, new Date())),
+  async ({ tx, params, query }) =>
+    monthReport(await siteFigures(tx, params.site, query.month, new Date()), await organisationLogo(tx)),
 );
