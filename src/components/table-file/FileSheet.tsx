@@ -5,7 +5,7 @@ import { Notice } from '../ui/Notice';
 import { Sheet } from '../ui/Sheet';
 import { number } from '../../drawings/numbers';
 import { ENCODING_NAMES, type Encoding } from './decode';
-import { SEPARATOR_NAMES, SEPARATORS, type Separator } from './parse';
+import { SEPARATOR_NAMES, SEPARATORS, type Separator } from './separators';
 
 /** What is said of a file before its cells are looked at. */
 export interface TableFacts {

@@ -2,7 +2,8 @@ import fc from 'fast-check';
 import Papa from 'papaparse';
 import { describe, expect, it } from 'vitest';
 import { decode } from './decode';
-import { parseText, separatorOf, type Separator } from './parse';
+import { parseText, separatorOf } from './parse';
+import type { Separator } from './separators';
 
 const utf16 = (text: string, big = false, mark = true): Uint8Array => {
   const units = [

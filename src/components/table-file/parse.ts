@@ -1,14 +1,7 @@
 import Papa from 'papaparse';
+import { SEPARATORS, type Separator } from './separators';
 
 /** Text with separators as rows of cells. */
-export const SEPARATORS = ['\t', ';', ',', '|'] as const;
-export type Separator = (typeof SEPARATORS)[number];
-export const SEPARATOR_NAMES: Record<Separator, string> = {
-  '\t': 'tab',
-  ';': 'semicolon ;',
-  ',': 'comma ,',
-  '|': 'bar |',
-};
 export const ROWS_MAX = 20_000;
 export const COLUMNS_MAX = 200;
 

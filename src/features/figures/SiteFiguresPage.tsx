@@ -11,6 +11,7 @@ import { energy, number, percent, quantity } from '../../drawings/numbers';
 import { withQuery } from '../../lib/api';
 import type { SiteFigures } from '../../schemas/api/figures';
 import { paths } from '../../schemas/paths';
+import { ImportedSheet } from './ImportedSheet';
 import { PeriodPicker } from './PeriodPicker';
 import { YearOnYear } from './YearOnYear';
 
@@ -106,6 +107,7 @@ export function SiteFiguresPage({ f, words }: Props) {
           {sentence}
         </Notice>
       )}
+      {f.imported.length > 0 && <ImportedSheet days={f.imported} label={f.period.label} />}
     </>
   );
 }

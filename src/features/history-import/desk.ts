@@ -1,7 +1,8 @@
 import Papa from 'papaparse';
 import { decode } from '../../components/table-file/decode';
 import type { TableFacts } from '../../components/table-file/FileSheet';
-import { COLUMNS_MAX, separatorOf, type Separator } from '../../components/table-file/parse';
+import { COLUMNS_MAX, separatorOf } from '../../components/table-file/parse';
+import type { Separator } from '../../components/table-file/separators';
 import {
   QUANTITIES,
   subjectWords,

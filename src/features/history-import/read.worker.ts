@@ -1,4 +1,4 @@
-import type { Separator } from '../../components/table-file/parse';
+import type { Separator } from '../../components/table-file/separators';
 import type { KnownSubjects, Layout } from '../../domain/history-import/layout';
 import { HistoryDesk, type CheckedHistory, type HistoryFacts, type OrderToSend } from './desk';
 

@@ -1,5 +1,5 @@
 import { useEffect, useRef, useState } from 'react';
-import type { Separator } from '../../components/table-file/parse';
+import type { Separator } from '../../components/table-file/separators';
 import { layoutFault, type Layout } from '../../domain/history-import/layout';
 import { ApiError } from '../../lib/api';
 import {

@@ -1,4 +1,4 @@
-import type { Separator } from '../../components/table-file/parse';
+import type { Separator } from '../../components/table-file/separators';
 import type { KnownNames } from '../../domain/commissioning/import/table';
 import { Desk, type CheckedFile, type CheckOrder, type FileFacts } from './desk';
 

@@ -1,7 +1,7 @@
 import type { KnownNames } from '../../domain/commissioning/import/table';
 import type { DeskAnswer, DeskOrder } from './check.worker';
 import type { CheckedFile, CheckOrder, FileFacts } from './desk';
-import type { Separator } from '../../components/table-file/parse';
+import type { Separator } from '../../components/table-file/separators';
 
 type Waiting = {
   resolve: (answer: DeskAnswer) => void;

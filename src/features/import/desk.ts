@@ -17,13 +17,8 @@ import {
   type NameColumn,
 } from '../../domain/commissioning/import/table';
 import { decode, type Encoding } from '../../components/table-file/decode';
-import {
-  parseText,
-  ROWS_MAX,
-  separatorOf,
-  type ParsedFile,
-  type Separator,
-} from '../../components/table-file/parse';
+import { parseText, ROWS_MAX, separatorOf, type ParsedFile } from '../../components/table-file/parse';
+import type { Separator } from '../../components/table-file/separators';
 
 /** What the desk says of a file before anything is checked. */
 export interface FileFacts {

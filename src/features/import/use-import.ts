@@ -11,7 +11,7 @@ import { ApiError } from '../../lib/api';
 import { IMPORT_STEPS, type ImportOutcome, type ImportPage } from '../../schemas/api/import';
 import type { CheckedFile, FileFacts } from './desk';
 import { DeskClient } from './desk-client';
-import type { Separator } from '../../components/table-file/parse';
+import type { Separator } from '../../components/table-file/separators';
 import { sendImport, type Progress } from './send';
 import { STEP_WORDS } from './words';
 

@@ -66,6 +66,8 @@ export interface SiteFigures {
   /** Share of the data below which a day is marked. */
   incompleteBelow: number;
   days: DayFigures[];
+  /** Days of the period of which nothing was measured here, from imported files. */
+  imported: { day: string; energyKWh: number; side: 'ac' | 'dc' }[];
   steps: LossStep[] | null;
   losses: {
     cause: string;

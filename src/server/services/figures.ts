@@ -21,6 +21,7 @@ import {
   tariffsOf,
   type FiguresSiteRow,
 } from '../queries/figures';
+import { importedSiteDays } from '../queries/history-readings';
 import { tellSiteChanged } from '../queries/live-notices';
 import { addAuditEntry } from '../queries/people';
 
@@ -65,6 +66,16 @@ async function comparison(
   if (days.length === 0) return null;
   const now = sums.filter((d) => d.day < whole.before).reduce((sum, d) => sum + d.energyAc, 0);
   return { nowKWh: now / 1000, beforeKWh: days.reduce((sum, d) => sum + d.energyAc, 0) / 1000 };
+}
+
+async function importedIn(tx: Tx, siteId: number, period: Period): Promise<SiteFigures['imported']> {
+  const days = await importedSiteDays(tx, [siteId], period.from, dayAfter(period.before, -1));
+  return days.flatMap(({ day, energyAc, energyDc }) => {
+    const energy = energyAc ?? energyDc;
+    return energy === null
+      ? []
+      : [{ day, energyKWh: energy / 1000, side: energyAc === null ? ('dc' as const) : ('ac' as const) }];
+  });
 }
 
 /**
@@ -118,6 +129,7 @@ export async function siteFigures(
     currency: site.currency,
     incompleteBelow: thresholdsOf(site.thresholds).incompleteBelow,
     days: sums.map((d) => ({ day: d.day, figures: figuresOf([d], 1, annual) })),
+    imported: await importedIn(tx, site.id, period),
     steps: lossSteps(
       sums,
       [...byKind].map(([kind, kWh]) => ({ label: LOSS_WORDS[kind] ?? 'Other causes', kWh })),
