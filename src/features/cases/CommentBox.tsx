@@ -3,6 +3,7 @@ import { useId, useRef, useState, type KeyboardEvent } from 'react';
 import { flushSync } from 'react-dom';
 import { Button } from '../../components/ui/Button';
 import { mentionAt, mentionChoices, mentionedIn, withMention } from '../../domain/cases/mentions';
+import { counted } from '../../drawings/numbers';
 import { api, type ApiError } from '../../lib/api';
 import { queryClient } from '../../lib/query-client';
 import { COMMENT_MAX, type CasePage } from '../../schemas/api/cases';
@@ -85,8 +86,6 @@ export function CommentBox({ hand }: { hand: CaseInHand }) {
           rows={3}
           value={text}
           maxLength={COMMENT_MAX}
-          role="combobox"
-          aria-expanded={open}
           aria-controls={listId}
           aria-autocomplete="list"
           aria-activedescendant={open ? `${listId}-${current}` : undefined}
@@ -126,6 +125,9 @@ export function CommentBox({ hand }: { hand: CaseInHand }) {
           ))}
         </ul>
       </div>
+      <p className="sr-only" role="status">
+        {open ? `${counted(offered.length, 'name')} to choose from: ${offered[current]?.name ?? ''}` : ''}
+      </p>
       <p id={`${listId}-hint`} className="mt-1 text-sm text-ink-2">
         @ and a name tells somebody.
       </p>
