@@ -106,6 +106,7 @@ const PAGES: readonly Shown[] = [
     path: () => '/try-a-reading?v=7.8&others=14%3A8.4',
     file: 'try-a-reading.astro',
   },
+  { name: 'programming interface', role: 'analyst', path: () => '/developers', file: 'developers.astro' },
   { name: 'methods, for an owner', role: 'customer', path: () => '/methods', file: 'methods.astro' },
   { name: 'status', role: 'manager', path: () => '/status', file: 'status.astro' },
   {

@@ -18,6 +18,9 @@ const KEY = ['account', 'tokens'];
 
 type Open = { kind: 'make' } | { kind: 'made'; made: MadeToken } | { kind: 'end'; token: TokenItem };
 
+const titleOf = (open: Open): string =>
+  ({ make: 'Make a token', made: 'Your new token', end: 'End this token?' })[open.kind];
+
 /** Tokens by which programs of one's own read and write. */
 export function Tokens({ initial, timeZone }: { initial: TokensPage; timeZone: string }) {
   const client = queryClient();
@@ -79,23 +82,16 @@ export function Tokens({ initial, timeZone }: { initial: TokensPage; timeZone: s
       >
         Make a token
       </Button>
-      <Dialog open={open?.kind === 'make'} title="Make a token" onClose={() => setOpen(null)}>
+      {/* one dialog whose content follows: one that closes would take the next one with it */}
+      <Dialog open={open !== null} title={open ? titleOf(open) : ''} onClose={close}>
         {open?.kind === 'make' && (
           <TokenForm sites={page.sites} onMade={(made) => setOpen({ kind: 'made', made })} />
         )}
-      </Dialog>
-      <Dialog open={open?.kind === 'made'} title="Your new token" onClose={close}>
         {open?.kind === 'made' && <Made made={open.made} onKept={close} />}
-      </Dialog>
-      <Dialog
-        open={open?.kind === 'end'}
-        title={open?.kind === 'end' ? `End the token ${open.token.name}?` : ''}
-        onClose={() => setOpen(null)}
-      >
         {open?.kind === 'end' && (
           <EndForm
             token={open.token}
-            onLeft={() => setOpen(null)}
+            onLeft={close}
             onEnded={() => {
               setDone(`The token ${open.token.name} has ended.`);
               close();
@@ -186,7 +182,10 @@ function EndForm({ token, onEnded, onLeft }: { token: TokenItem; onEnded: () => 
   };
   return (
     <>
-      <p>The program that uses it is refused from that moment. It can’t be undone; a new one can be made.</p>
+      <p>
+        The program that uses <strong className="font-semibold">{token.name}</strong> is refused from that
+        moment. It can’t be undone; a new one can be made.
+      </p>
       {fault && (
         <p role="alert" className="mt-3 font-medium text-rust-ink">
           {fault.message}

@@ -114,7 +114,7 @@ function Example({ curl, id, onCopied }: { curl: string; id: string; onCopied: (
         data-example={id}
         tabIndex={0}
         aria-label="Example for a shell"
-        className="overflow-x-auto border border-rule bg-film px-3 py-2.5 font-mono text-[13px] leading-5"
+        className="whitespace-pre-wrap border border-rule bg-film px-3 py-2.5 font-mono text-[13px] leading-5 [overflow-wrap:anywhere]"
       >
         {curl}
       </pre>

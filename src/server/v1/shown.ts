@@ -67,6 +67,8 @@ export function typeWords(schema: JsonSchema | undefined): string {
   }
   if (schema.type === 'array') return `list of ${typeWords(schema.items) || 'anything'}`;
   if (schema.format && FORMAT[schema.format]) return FORMAT[schema.format] ?? '';
+  const members = Object.keys(schema.properties ?? {});
+  if (members.length > 0) return `{ ${members.join(', ')} }`;
   const types = [schema.type ?? []].flat();
   return types.map((t) => PLAIN[t] ?? t).join(' or ') || 'anything';
 }

@@ -141,7 +141,7 @@ export function unitFramesOf(names: Named, row: FrameRow): UnitFrameRecord[] {
 
 const column = <R>(header: string, value: (record: R) => string | number | null): StreamColumn => ({
   header,
-  value: value as StreamColumn['value'],
+  value,
 });
 const HEAD = [
   column<{ at: string }>('time (UTC)', (r) => r.at),

@@ -19,7 +19,7 @@ const whole = <T extends z.ZodObject>(schema: T): T =>
       context.addIssue({ code: 'custom', path: ['site'], message: 'Give either site or string' });
     if (Date.parse(to) <= Date.parse(from))
       context.addIssue({ code: 'custom', path: ['to'], message: 'Give a time after from' });
-  }) as T;
+  });
 
 export const framesQuery = whole(
   z.strictObject({
