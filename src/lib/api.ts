@@ -46,6 +46,8 @@ export interface Call {
   query?: Record<string, QueryValue>;
   headers?: Record<string, string>;
   signal?: AbortSignal;
+  /** Goes out though the page is left at this moment. */
+  keepalive?: boolean;
 }
 
 const isRecord = (value: unknown): value is Record<string, unknown> =>
@@ -100,6 +102,7 @@ export async function api<T>(path: string, call: Call = {}): Promise<T> {
       credentials: 'same-origin',
       body: call.body === undefined ? undefined : JSON.stringify(call.body),
       signal: call.signal,
+      keepalive: call.keepalive,
     });
   } catch (error) {
     if (error instanceof DOMException && error.name === 'AbortError') throw error;

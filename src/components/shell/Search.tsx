@@ -104,11 +104,11 @@ export function Search() {
           setOpen(true);
         }}
         onKeyDown={onKeyDown}
-        className="target w-[150px] rounded border border-rule bg-sheet py-1 pl-2.5 pr-8 text-[15px] text-ink placeholder:text-ink-3 sm:w-[200px] lg:w-[300px] [&::-webkit-search-cancel-button]:hidden"
+        className="target w-[108px] rounded border border-rule bg-sheet py-1 pl-2.5 pr-2 sm:pr-8 text-[15px] text-ink placeholder:text-ink-3 sm:w-[200px] lg:w-[300px] [&::-webkit-search-cancel-button]:hidden"
       />
       <kbd
         aria-hidden="true"
-        className="pointer-events-none absolute right-2 top-1/2 -translate-y-1/2 rounded border border-rule px-1.5 font-sans text-xs text-ink-3"
+        className="pointer-events-none absolute right-2 top-1/2 hidden sm:block -translate-y-1/2 rounded border border-rule px-1.5 font-sans text-xs text-ink-3"
       >
         /
       </kbd>

@@ -36,12 +36,12 @@ export function NoticeList({ items, at, timeZone, onOpen, onMark }: Props) {
       {items.map((item) => {
         const unread = item.readAt === null;
         return (
-          <li key={item.id} className="flex flex-wrap items-start gap-x-4 gap-y-1 py-3" data-unread={unread}>
+          <li key={item.id} className="flex items-start gap-x-3 py-3 sm:gap-x-4" data-unread={unread}>
             <span
               aria-hidden="true"
               className={`mt-1.5 h-2.5 w-2.5 shrink-0 ${unread ? (item.hazard && !item.overAt ? 'rotate-45 bg-crimson' : 'bg-ink') : 'border border-rule'}`}
             />
-            <div className="min-w-0 flex-1 basis-[220px]">
+            <div className="min-w-0 flex-1">
               <p className={`text-[15px] leading-5 ${unread ? 'font-semibold' : ''}`}>
                 <a
                   href={item.href}
@@ -72,9 +72,10 @@ export function NoticeList({ items, at, timeZone, onOpen, onMark }: Props) {
               data-mark
               aria-label={`${unread ? 'Mark as read' : 'Mark as unread'}: ${item.headline}`}
               onClick={() => onMark(item, unread)}
-              className="no-print text-sm"
+              className="no-print shrink-0 px-2.5 text-sm sm:px-4"
             >
-              {unread ? 'Mark as read' : 'Unread'}
+              <span className="sm:hidden">{unread ? 'Read' : 'Unread'}</span>
+              <span className="hidden sm:inline">{unread ? 'Mark as read' : 'Mark as unread'}</span>
             </Button>
           </li>
         );

@@ -15,7 +15,7 @@ import { useViewInUrl } from '../../lib/view-in-url';
 import type { NoticeItem, NoticesPage, NoticesView } from '../../schemas/api/notices';
 import { paths } from '../../schemas/paths';
 import { NoticeList } from './NoticeList';
-import { NOTICES_DEFAULTS, noticesFinding, type NoticesList } from './words';
+import { inOrder, NOTICES_DEFAULTS, noticesFinding, type NoticesList } from './words';
 
 interface Props {
   initial: NoticesPage;
@@ -50,7 +50,10 @@ export function Notices({ initial, view: { before, ...first } }: Props) {
     if (kind === 'delta') void again();
   });
   const marking = useMutation<void, ApiError, Marking>(
-    { mutationFn: (body) => api(paths.api.noticesRead(), { method: 'POST', body }), onSettled: again },
+    {
+      mutationFn: (body) => api(paths.api.noticesRead(), { method: 'POST', body, keepalive: true }),
+      onSettled: again,
+    },
     client,
   );
   const words = noticesFinding(page);
@@ -66,6 +69,11 @@ export function Notices({ initial, view: { before, ...first } }: Props) {
         sentence={words.sentence}
         actions={
           <>
+            {page.hazards > 0 && view.kind !== 'hazard' && (
+              <Button weight="primary" onClick={() => setView({ kind: 'hazard', show: 'unread' })}>
+                Show these only
+              </Button>
+            )}
             {page.unread > 0 && newest && (
               <Button disabled={marking.isPending} onClick={() => marking.mutate({ upTo: newest.number })}>
                 Mark all as read
@@ -141,7 +149,7 @@ export function Notices({ initial, view: { before, ...first } }: Props) {
           </Notice>
         ) : (
           <NoticeList
-            items={page.items}
+            items={inOrder(page.items)}
             at={page.at}
             timeZone={page.timeZone}
             onOpen={open}

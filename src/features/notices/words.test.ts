@@ -1,7 +1,7 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import type { NoticeItem } from '../../schemas/api/notices';
-import { clockOfMinute, minuteOfClock, noticesFinding } from './words';
+import { clockOfMinute, inOrder, minuteOfClock, noticesFinding } from './words';
 
 describe('a time of day', () => {
   it('is read as it is written', () => {
@@ -14,6 +14,23 @@ describe('a time of day', () => {
   it.each(['', '24:00', '7', '07:60', 'noon', '-1:00'])('%j is none', (typed) => {
     expect(minuteOfClock(typed)).toBeNull();
   });
+});
+
+it('puts hazards that nobody has read first, what is over or read where it came', () => {
+  const item = (id: string, more: Partial<NoticeItem> = {}) =>
+    ({ id, hazard: true, readAt: null, overAt: null, ...more }) as NoticeItem;
+  const list = [
+    item('a', { hazard: false }),
+    item('b', { readAt: 'x' }),
+    item('c'),
+    item('d', { overAt: 'x' }),
+    item('e'),
+  ];
+  expect(
+    inOrder(list)
+      .map((i) => i.id)
+      .join(''),
+  ).toBe('ceabd');
 });
 
 it.each([

@@ -1,6 +1,6 @@
 import { counted } from '../../drawings/numbers';
 import type { How } from '../../domain/notices/kinds';
-import type { NoticesPage, NoticesView } from '../../schemas/api/notices';
+import type { NoticeItem, NoticesPage, NoticesView } from '../../schemas/api/notices';
 
 export const NOTICES_DEFAULTS = { q: '', show: 'all', kind: 'all', site: '' } as const;
 export type NoticesList = Omit<NoticesView, 'before'>;
@@ -35,6 +35,14 @@ export function noticesFinding(page: Pick<NoticesPage, 'unread' | 'hazards' | 'i
     sentence: 'What you are told of appears here, and by letter where you chose so.',
   };
 }
+
+const isPressing = (item: NoticeItem): boolean => item.hazard && item.readAt === null && item.overAt === null;
+
+/** Hazards that nobody has read stand first, the rest as it came. */
+export const inOrder = (items: readonly NoticeItem[]): NoticeItem[] => [
+  ...items.filter(isPressing),
+  ...items.filter((item) => !isPressing(item)),
+];
 
 export const clockOfMinute = (minute: number): string =>
   `${String(Math.floor(minute / 60)).padStart(2, '0')}:${String(minute % 60).padStart(2, '0')}`;
