@@ -3,6 +3,7 @@ import { join } from 'node:path';
 import { fileURLToPath } from 'node:url';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { PERMISSIONS, ROLES, mayUse, type Role } from '../../src/domain/access/permissions';
+import { newToken, tokenHash } from '../../src/server/auth/secret-link';
 import { testDatabase, type TestDatabase } from '../support/database';
 import { PASSWORD, testFleet, type TestFleet } from '../support/fleet';
 import { signInAt, startSite, type RunningSite } from '../support/server';
@@ -10,8 +11,9 @@ import { ROUTES, type Route, type Target } from './routes';
 
 /**
  * Every route × manager, technician, analyst, customer, signed out × a site that was given, another site of the
- * organisation, a site of another organisation, a site that is not there. What is expected follows from the table
- * of permissions alone.
+ * organisation, a site of another organisation, a site that is not there; and × a manager who was deactivated after
+ * signing in, and a link that shares the given site, held out as a session and as a token. What is expected follows
+ * from the table of permissions alone.
  */
 const PAGES = fileURLToPath(new URL('../../src/pages', import.meta.url));
 const METHODS = /export const (GET|POST|PUT|PATCH|DELETE|ALL)\b/g;
@@ -28,6 +30,12 @@ const PEOPLE: Record<Role, string> = {
   analyst: 'analyst@lowfield.example',
   customer: 'customer@lowfield.example',
 };
+
+const GONE = 'gone@lowfield.example';
+/** Nobody who is signed in now, whatever they hold out. */
+const OUTSIDE = ['signed out', 'deactivated', 'share link'] as const;
+type Who = Role | (typeof OUTSIDE)[number];
+const isInside = (who: Who): who is Role => !(OUTSIDE as readonly string[]).includes(who);
 
 const isPage = (route: Route): boolean => route.file.endsWith('.astro');
 const filesOnDisk = readdirSync(PAGES, { recursive: true, withFileTypes: true })
@@ -57,7 +65,8 @@ describe('the table of routes', () => {
 let db: TestDatabase;
 let fleet: TestFleet;
 let site: RunningSite;
-const cookies = new Map<Role, string>();
+/** What each of them sends to be known by. */
+const held = new Map<Who, Record<string, string>>([['signed out', {}]]);
 const targets = new Map<string, Target>();
 
 beforeAll(async () => {
@@ -68,7 +77,24 @@ beforeAll(async () => {
     targets.set(name, { site: ref, string: [...strings.values()][0]?.ref ?? '' });
   }
   site = await startSite(db);
-  for (const role of ROLES) cookies.set(role, await signInAt(site.url, PEOPLE[role], PASSWORD));
+  for (const role of ROLES) held.set(role, { cookie: await signInAt(site.url, PEOPLE[role], PASSWORD) });
+  await db.owner.query(
+    `insert into person (organisation_id, email, name, role, password_hash)
+     select organisation_id, $2, 'Sunniva Quill', role, password_hash from person where email = $1`,
+    [PEOPLE.manager, GONE],
+  );
+  held.set('deactivated', { cookie: await signInAt(site.url, GONE, PASSWORD) });
+  // the row of the session stays: it is the person that no longer counts
+  await db.owner.query('update person set active = false where email = $1', [GONE]);
+  const token = newToken();
+  await db.owner.query(
+    `insert into share_link (site_id, label, token_hash, created_by) select $1, 'Lobby', $2, id from person where email = $3`,
+    [fleet.site(GIVEN).id, tokenHash(token), PEOPLE.manager],
+  );
+  held.set('share link', {
+    cookie: `wakeline_session=${token}; wakeline_kept=${token}`,
+    authorization: `Bearer ${token}`,
+  });
 });
 afterAll(async () => {
   await site.stop();
@@ -78,46 +104,50 @@ afterAll(async () => {
 const targetOf = (name: string): Target => targets.get(name) ?? ABSENT;
 const bodyOf = (route: Route, target: Target): unknown =>
   typeof route.body === 'function' ? (route.body as (target: Target) => unknown)(target) : route.body;
-function ask(route: Route, who: Role | 'signed out', target: Target): Promise<Response> {
-  const cookie = who === 'signed out' ? undefined : cookies.get(who);
+function ask(route: Route, who: Who, target: Target): Promise<Response> {
   return fetch(site.url + route.path(target), {
     method: route.method,
     redirect: 'manual',
     headers: {
       origin: site.url,
-      ...(cookie ? { cookie } : {}),
+      ...held.get(who),
       ...(route.body === undefined ? {} : { 'content-type': 'application/json' }),
     },
     body: route.body === undefined ? undefined : JSON.stringify(bodyOf(route, target)),
   });
 }
 /** What the table of permissions says of it. */
-function expected(route: Route, who: Role | 'signed out', where: string): readonly number[] {
+function expected(route: Route, who: Who, where: string): readonly number[] {
   if (route.permission === 'public') return route.served;
-  if (who === 'signed out') return isPage(route) ? [303] : [401];
+  if (!isInside(who)) return isPage(route) ? [303] : [401];
   if (!mayUse(who, route.permission)) return [403];
   if (route.of === 'nothing') return route.served;
   const seen = where === GIVEN || (where === NOT_GIVEN && who !== 'customer');
   return seen ? route.served : [404];
 }
-const places = (route: Route) =>
-  route.of === 'nothing' ? ['nowhere'] : [GIVEN, NOT_GIVEN, FOREIGN, 'nowhere'];
+/** Who is known but let in no longer is tried where they were, or are shown something. */
+const places = (route: Route, who: Who) => {
+  if (route.of === 'nothing') return ['nowhere'];
+  return who === 'deactivated' || who === 'share link' ? [GIVEN] : [GIVEN, NOT_GIVEN, FOREIGN, 'nowhere'];
+};
 /** Signing out would end the session that the others of the matrix use. */
 const asked = ROUTES.filter((r) => r.file !== 'api/sign-out.ts');
 
-describe.each([...ROLES, 'signed out' as const])('%s', (who) => {
+describe.each<Who>([...ROLES, ...OUTSIDE])('%s', (who) => {
   it.each(
-    asked.flatMap((route) => places(route).map((where) => [route.method, route.file, where, route] as const)),
+    asked.flatMap((route) =>
+      places(route, who).map((where) => [route.method, route.file, where, route] as const),
+    ),
   )('%s %s, %s', async (_method, _file, where, route) => {
     const response = await ask(route, who, targetOf(where));
     const body = await response.text();
     expect(expected(route, who, where), `${response.status}: ${body.slice(0, 400)}`).toContain(
       response.status,
     );
-    if (route.permission !== 'public' && who === 'signed out' && isPage(route))
+    if (route.permission !== 'public' && !isInside(who) && isPage(route))
       expect(response.headers.get('location')).toMatch(/^\/sign-in(\?next=|$)/);
     // what a person may not see is not in any answer, whatever was asked
-    if (who !== 'signed out') {
+    if (isInside(who)) {
       expect(body).not.toContain(FOREIGN);
       if (who === 'customer') expect(body).not.toContain(NOT_GIVEN);
     }
@@ -175,7 +205,7 @@ describe('requests of another site', () => {
         method: route.method,
         headers: {
           origin: 'https://elsewhere.example',
-          cookie: cookies.get('manager') ?? '',
+          ...held.get('manager'),
           'content-type': 'text/plain',
         },
         body: JSON.stringify(bodyOf(route, targetOf(GIVEN)) ?? {}),

@@ -35,8 +35,8 @@ export const FIGURES: readonly Route[] = [
     permission: 'tariff.write',
     of: 'site',
     path: (t) => `/api/sites/${t.site}/tariffs`,
-    body: { from: 'no day', priceKWh: 0.3 },
-    served: [422],
+    body: { from: '2026-04-01', priceKWh: 0.3 },
+    served: [200, 201, 204, 409],
   },
   {
     file: 'api/sites/[site]/tariffs/[tariff].ts',

@@ -133,7 +133,7 @@ export async function writeOneOfEach(owner: pg.Pool, siteId: number): Promise<vo
   await add('tariff', { site_id: site, from_on: day, price_kwh: 0.2, created_by: person });
   const file2 = {
     site_id: site,
-    number: 900 + site,
+    number: 100_000 + site,
     organisation_id: organisation,
     title: 'Loose lead',
     what: 'A1',

@@ -57,11 +57,12 @@ export function sharedLinkAttacks(scene: () => Scene): void {
     const { ask, fleet } = scene();
     const token = await linked('');
     const ref = fleet.site(OWN).ref;
-    for (const headers of [
+    const guises: Record<string, string>[] = [
       { cookie: `wakeline_session=${token}` },
       { cookie: `wakeline_kept=${token}` },
       { authorization: `Bearer ${token}` },
-    ])
+    ];
+    for (const headers of guises)
       for (const path of [`/api/sites/${ref}`, `/api/my-site/${ref}`, '/api/fleet', `/api/shared/${ref}`])
         expect([401, 404], `${path} with ${Object.keys(headers).join()}`).toContain(
           (await ask(path, { headers })).status,
