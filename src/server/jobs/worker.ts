@@ -1,9 +1,11 @@
-import { parseCronItems, run, runMigrations, type Runner } from 'graphile-worker';
+import { EventEmitter } from 'node:events';
+import { parseCronItems, run, runMigrations, type Runner, type WorkerEvents } from 'graphile-worker';
 import { config } from '../config';
 import { Listener } from '../live/listener';
 import { log } from '../log';
 import { CHANNELS } from '../queries/live-notices';
 import { keepDays } from './keep-days';
+import { WorkerLife } from './life';
 import { logger } from './logger';
 import { CRON, TASKS } from './tasks';
 import { TellWatch } from './tell';
@@ -15,6 +17,7 @@ const GATHER_MS = 1000;
 
 interface Working {
   runner: Runner;
+  life: WorkerLife;
   listener: Listener;
   telling: TellWatch;
 }
@@ -27,7 +30,11 @@ export async function startWorker(): Promise<void> {
   const connectionString = config().DATABASE_URL;
   await runMigrations({ connectionString, logger });
   await keepDays(new Date());
+  const events: WorkerEvents = new EventEmitter();
+  let name = '';
+  events.once('pool:create', ({ workerPool }) => (name = workerPool.id));
   const runner = await run({
+    events,
     connectionString,
     taskList: TASKS,
     parsedCronItems: parseCronItems(CRON),
@@ -37,6 +44,8 @@ export async function startWorker(): Promise<void> {
     noHandleSignals: true,
     logger,
   });
+  const life = new WorkerLife(name);
+  await life.start();
   // a lost wake-up is made good by the sweep
   const listener = new Listener(
     [CHANNELS.judged],
@@ -76,4 +85,5 @@ export async function stopWorker(): Promise<void> {
   await working?.listener.stop();
   await working?.telling.stop();
   await working?.runner.stop();
+  await working?.life.stop();
 }

@@ -30,3 +30,32 @@ export async function queueExists(client: pg.ClientBase): Promise<boolean> {
   );
   return rows[0]?.there ?? false;
 }
+
+/** A worker's sign of life: an advisory lock of this connection under its name, gone with the process. */
+export async function holdLife(client: pg.ClientBase, worker: string): Promise<void> {
+  await client.query('select pg_advisory_lock(727007, hashtext($1))', [worker]);
+}
+
+/** Workers that hold jobs and show no sign of life: their processes died in the middle. */
+export async function deadWorkers(client: pg.ClientBase, own: string): Promise<string[]> {
+  const { rows } = await client.query<{ worker: string }>(
+    `select distinct locked_by as worker from graphile_worker.jobs where locked_by is not null and locked_by <> $1`,
+    [own],
+  );
+  const dead: string[] = [];
+  for (const { worker } of rows) {
+    const taken = await client.query<{ free: boolean }>(
+      'select pg_try_advisory_lock(727007, hashtext($1)) as free',
+      [worker],
+    );
+    if (!taken.rows[0]?.free) continue;
+    await client.query('select pg_advisory_unlock(727007, hashtext($1))', [worker]);
+    dead.push(worker);
+  }
+  return dead;
+}
+
+/** Gives back what these workers held: their jobs are tried again at once, their queues go on. */
+export async function freeJobsOf(client: pg.ClientBase, workers: readonly string[]): Promise<void> {
+  await client.query('select graphile_worker.force_unlock_workers($1::text[])', [workers]);
+}
