@@ -294,6 +294,18 @@ const PAGES: readonly Shown[] = [
     path: () => `/sites/${refOf(CLINIC)}/figures?period=2025`,
     file: 'sites/[site]/figures.astro',
   },
+  {
+    name: 'loggers of a site',
+    role: 'technician',
+    path: () => `/sites/${refOf(CLINIC)}/loggers`,
+    file: 'sites/[site]/loggers.astro',
+  },
+  {
+    name: 'earlier readings of a site',
+    role: 'analyst',
+    path: () => `/sites/${refOf(CLINIC)}/history-import`,
+    file: 'sites/[site]/history-import.astro',
+  },
   { name: 'letters', role: 'manager', path: () => '/mail', file: 'mail.astro' },
   { name: 'an account', role: 'analyst', path: () => '/account', file: 'account.astro' },
   { name: 'the account of an owner', role: 'customer', path: () => '/account', file: 'account.astro' },

@@ -13,6 +13,8 @@ import type { HistoryImportView, HistoryLine } from '../../src/schemas/api/histo
 import { asActor } from '../../src/server/db/transaction';
 import { subjectsOf } from '../../src/server/queries/history-import';
 import { importedDays, importedSiteDays, importedSteps } from '../../src/server/queries/history-readings';
+import { siteFigures } from '../../src/server/services/figures';
+import { readHistory } from '../../src/server/services/string-history';
 import { strangerIn } from '../support/as-built';
 import { testDatabase, type TestDatabase } from '../support/database';
 import { ask } from '../support/endpoint';
@@ -86,11 +88,16 @@ async function send(
   return {
     lines,
     made: last && 'outcome' in last ? last.outcome : undefined,
-    problem: last && 'problem' in last ? (last.problem) : undefined,
+    problem: last && 'problem' in last ? last.problem : undefined,
   };
 }
 const undo = (made: string, who = analyst) =>
-  ask(undoRoute, { actor: who, method: 'POST', params: { site: site.ref, import: made }, body: { reason: '' } });
+  ask(undoRoute, {
+    actor: who,
+    method: 'POST',
+    params: { site: site.ref, import: made },
+    body: { reason: '' },
+  });
 const counted = async (table: string): Promise<number> =>
   (await db.owner.query<{ n: number }>(`select count(*)::int as n from ${table}`)).rows[0]!.n;
 
@@ -144,6 +151,25 @@ describe('an import', () => {
       energyAc: null,
       energyDc: expect.closeTo(64_040, 0),
     });
+
+    // what pages show of it
+    const shown = await asActor(analyst, async (tx) => ({
+      history: await readHistory(
+        tx,
+        site.strings.get(a!)?.ref ?? '',
+        { range: 'day', quantity: 'voltage', on: '2024-05-04' },
+        new Date(),
+      ),
+      figures: await siteFigures(tx, site.ref, '2024-05', new Date()),
+    }));
+    expect(shown.history.imported.values.filter((v) => v !== null)).toHaveLength(32);
+    expect(shown.history.at).toEqual([]); // nothing of it passes for measured
+    expect(shown.figures.imported[0]).toEqual({
+      day: '2024-05-04',
+      energyKWh: expect.closeTo(64.04, 2),
+      side: 'dc',
+    });
+    expect(shown.figures.now?.energyKWh ?? 0).toBe(0);
 
     const response = await undo(made!.id);
     expect(response.status).toBe(200);

@@ -38,8 +38,8 @@ export function finding({ loggers }: LoggersPage, now: Date): { heading: string;
         : `All ${loggers.length} loggers are connected`,
     sentence:
       refused === 0
-        ? 'Nothing that they sent was refused.'
-        : `${counted(refused, 'message')} of theirs ${refused === 1 ? 'was' : 'were'} refused so far: what and why stands below.`,
+        ? `Nothing that ${loggers.length === 1 ? 'it' : 'they'} sent was refused.`
+        : `${counted(refused, 'message')} ${refused === 1 ? 'was' : 'were'} refused so far: what and why stands below.`,
   };
 }
 

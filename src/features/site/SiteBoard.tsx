@@ -43,10 +43,12 @@ interface Props {
   /** Cases here that are not closed. */
   cases: readonly CaseItem[];
   standing: SiteStanding;
+  /** Readings of the time before, from a file. */
+  mayImport: boolean;
 }
 const DEFAULTS: { kind: KindWanted } = { kind: 'all' };
 
-export function SiteBoard({ initial, events, kind: initialKind, cases, standing }: Props) {
+export function SiteBoard({ initial, events, kind: initialKind, cases, standing, mayImport }: Props) {
   const client = queryClient();
   const { id, timeZone } = initial.site;
   const { data: page, error, refetch } = useQuery(siteQuery(initial), client);
@@ -103,6 +105,17 @@ export function SiteBoard({ initial, events, kind: initialKind, cases, standing 
         >
           Planned works
         </a>
+        <a className="target inline-flex items-center text-petrol hover:underline" href={paths.loggers(id)}>
+          Loggers
+        </a>
+        {mayImport && (
+          <a
+            className="target inline-flex items-center text-petrol hover:underline"
+            href={paths.historyImport(id)}
+          >
+            Earlier readings
+          </a>
+        )}
       </nav>
       <StandingSheet siteId={id} standing={standing} now={now} timeZone={timeZone} />
       <NotRead
