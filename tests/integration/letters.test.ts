@@ -71,6 +71,7 @@ describe('rules of a person', () => {
     expect(more).toBeUndefined();
     expect(letter?.subject.replaceAll(/\s/g, ' ')).toBe('Two things to do, worth about 8.4 kWh a day');
     expect(letter?.text).toContain('On the ladder: Bring spare units');
+    expect(letter?.text).toContain('! Shutdown is not isolation.');
     expect(letter?.html).toContain('cid:drawing@wakeline');
   });
 

@@ -27,14 +27,11 @@ export function NoticeCount({ unread, hazards }: Props) {
     if (newest.hazard) setShown(newest.id);
   });
   const count = now.unread >= MOST ? '99+' : String(now.unread);
-  const words =
-    now.unread === 0 ? 'Notices, all read' : `Notices, ${count === '99+' ? 'more than 99' : count} unread`;
   const where = came?.siteName ? `${came.siteName}: ` : '';
   return (
     <>
       <a
         href={paths.notices()}
-        aria-label={words}
         data-unread={now.unread}
         className="flex min-h-[44px] min-w-[44px] items-center justify-center gap-1.5 text-[15px] text-ink-2 hover:text-ink"
       >
@@ -48,17 +45,15 @@ export function NoticeCount({ unread, hazards }: Props) {
           />
           <path d="M5 7h8M5 9.8h5" stroke="currentColor" strokeWidth="1.4" />
         </svg>
-        <span aria-hidden="true" className="hidden xl:inline">
-          Notices
-        </span>
+        <span className="sr-only xl:not-sr-only">Notices</span>
         {now.unread > 0 && (
           <span
-            aria-hidden="true"
             className={`min-w-[20px] rounded-sm px-1 text-center text-xs font-semibold leading-5 ${now.hazards > 0 ? 'bg-crimson text-on-crimson' : 'bg-ink text-sheet'}`}
           >
             {count}
           </span>
         )}
+        <span className="sr-only">{now.unread > 0 ? 'unread' : 'all read'}</span>
       </a>
       <p role="status" className="sr-only">
         {came ? `New notice. ${where}${came.headline}` : ''}

@@ -3,12 +3,9 @@
 export interface CauseAdvice {
   /** An instruction for today. */
   today: string;
-  /** For the person on the ladder. */
+  /** For the person on the ladder; the caution stands once, above all of it. */
   ladder: string;
 }
-
-const METER =
-  'Shutdown is not isolation: each module and its leads stay at module voltage. Isolate, lock out, and prove dead with a rated meter first.';
 
 const BY_PART: Partial<Record<string, string>> = {
   transmitter: 'Look at the transmitter before anybody goes up: its supply, its output, its fuse.',
@@ -25,37 +22,37 @@ const BY_KIND: Record<string, CauseAdvice> = {
   },
   stuck: {
     today: 'Find what keeps these units in shutdown; they make nothing until then.',
-    ladder: `Bring spare units of the same type and a meter. ${METER}`,
+    ladder: 'Bring spare units of the same type and a rated meter.',
   },
   unconfirmed: {
     today:
       'Find out why nothing shows that these units followed. Until then a shutdown of them proves nothing.',
-    ladder: `Treat these strings as live: nothing shows that they followed the command. ${METER}`,
+    ladder: 'Treat these strings as live: nothing shows that they followed the command.',
   },
   silent: {
     today: 'Find out why nothing is heard. Until then a shutdown of these units can’t be confirmed.',
-    ladder: `Treat these units as live: what they do is not known. ${METER}`,
+    ladder: 'Treat these units as live: what they do is not known.',
   },
   low_output: {
     today: 'Look at the string’s page, then decide whether somebody has to go.',
-    ladder: `Look for shade, soiling and damage first, with nothing opened. ${METER}`,
+    ladder: 'Look for shade, soiling and damage first, with nothing opened.',
   },
   loop_resistance: {
     today: 'Plan a visit soon: a connector that gets hot gets worse, and can burn.',
-    ladder: `Look with a thermal camera under load from a safe place; open no connector under load. ${METER}`,
+    ladder: 'Look with a thermal camera under load, from a safe place. Open no connector under load.',
   },
   wrong_string: {
     today: 'Correct the as-built, or have one string isolated to see whose current goes to zero.',
-    ladder: `Read the serials where the units sit. ${METER}`,
+    ladder: 'Read the serials where the units sit.',
   },
   weak_unit: {
     today: 'Watch it, or take a spare module and unit along on the next visit.',
-    ladder: `Look at the module’s glass, cells and leads before anything is taken off. ${METER}`,
+    ladder: 'Look at the module’s glass, cells and leads before anything is taken off.',
   },
 };
 const ANY: CauseAdvice = {
   today: 'Look at its page and decide what has to be done.',
-  ladder: METER,
+  ladder: 'Look before anything is opened.',
 };
 
 /** @param part the kind of the shared part, if there is one */

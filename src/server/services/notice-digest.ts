@@ -8,7 +8,7 @@ import { letter, type LetterSection } from '../mail/letter';
 import { recipients, type RecipientRow } from '../queries/notices-tell';
 import { dueLetters, markLettered, type GatheredLine } from '../queries/notices-write';
 import { addMessage } from '../queries/outbox';
-import { choicesLine, drawn, greetingOf, pictureOf, wayOutOf } from './notice-letters';
+import { CAUTION, choicesLine, drawn, greetingOf, pictureOf, wayOutOf } from './notice-letters';
 
 /** The letter that gathers several: the day's, and the one after quiet hours. */
 
@@ -52,6 +52,7 @@ async function writeOne(tx: Tx, now: Date): Promise<'none' | 'written' | 'droppe
     greeting: greetingOf(person),
     finding: words.finding,
     paragraphs: words.paragraphs,
+    ...(open.length > 0 && { caution: CAUTION }),
     ...drawn(picture),
     sections: words.sections,
     footer: `You get this letter because you look after sites for ${person.organisationName}; it gathers what you are told of once a day or after quiet hours. ${choicesLine()}`,
@@ -106,7 +107,7 @@ function otherItem(line: GatheredLine, person: RecipientRow, now: Date): LetterS
     title: [line.siteName, line.headline].filter(Boolean).join(': '),
     href: publicUrl() + line.href,
     lines: [
-      ...(line.body ? [line.body] : []),
+      ...(line.body && !line.over ? [line.body] : []),
       `${KINDS[line.kind].name}, ${clockOrDate(line.createdAt, now, person.timeZone)}.${came(line)}`,
     ],
   };

@@ -104,7 +104,8 @@ const eachOf = ({ each = [] }: Telling): Pick<LetterParts, 'sections'> =>
         ],
       };
 
-const CAUTION = {
+/** Above whatever sends somebody to a roof. */
+export const CAUTION = {
   strong: 'Shutdown is not isolation.',
   rest: 'Each module and its leads to its unit stay at module voltage. Isolate, lock out, and prove dead with a rated meter; local code and the authority having jurisdiction come first.',
 };
@@ -178,6 +179,7 @@ function commonParts(telling: Telling, person: RecipientRow): LetterParts {
     paragraphs: [words.body, ...(advice ? [advice.today, `On the ladder: ${advice.ladder}`] : [])].filter(
       Boolean,
     ),
+    ...(advice && { caution: CAUTION }),
     figures,
     action: { words: customer ? 'See your site' : 'Look at it', href: publicUrl() + telling.href },
     footer: `You get this letter because ${customer ? `you see ${event.site.name} in Wakeline` : `you look after sites for ${person.organisationName}`} and chose to be told of “${KINDS[told.kind].name}” at once.`,
