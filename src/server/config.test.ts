@@ -38,6 +38,15 @@ describe('the environment', () => {
     expect(publicUrl(parseConfig({ DATABASE_URL: URL }))).toBe('http://127.0.0.1:4321');
   });
 
+  it('keeps cookies to HTTPS where people reach the site so, and asks for HTTPS only where that is set', () => {
+    const behind = parseConfig({ DATABASE_URL: URL, TRUST_PROXY: '1', PUBLIC_URL: 'https://roofs.example' });
+    expect(behind.COOKIE_SECURE).toBe(true);
+    expect(behind.HSTS_MAX_AGE_S).toBeUndefined();
+    expect(parseConfig({ DATABASE_URL: URL, PUBLIC_URL: 'http://roofs.example' }).COOKIE_SECURE).toBe(false);
+    expect(parseConfig({ DATABASE_URL: URL, HSTS_MAX_AGE_S: '31536000' }).HSTS_MAX_AGE_S).toBe(31_536_000);
+    expect(() => parseConfig({ DATABASE_URL: URL, HSTS_MAX_AGE_S: 'a year' })).toThrow(/HSTS_MAX_AGE_S/);
+  });
+
   it('takes an empty value as not given', () => {
     expect(parseConfig({ DATABASE_URL: URL, PORT: '' }).PORT).toBe(4321);
     expect(() => parseConfig({ DATABASE_URL: '' })).toThrow(/DATABASE_URL/);
