@@ -15,10 +15,15 @@ export const AUDIT_AREAS = [
   'shutdown_test',
   'handover',
   'hazard',
+  'case',
   'webhook',
   'history',
   'settings',
   'tariff',
+  'isolation',
+  'jobs',
+  'annotation',
+  'planned_work',
 ] as const;
 
 export const auditView = z.object({
