@@ -183,6 +183,7 @@ export const TABLE: readonly Row[] = [
       'reference',
       'integration',
       'access',
+      'attacks',
       'migrations',
       'architecture',
       'e2e',
