@@ -110,16 +110,23 @@ export interface KnownSubjects {
   inverters: readonly { name: string; inputs: readonly number[] }[];
 }
 
-/** Why a file can't be read with this layout yet; null: it can. */
-export function layoutFault({ columns }: Pick<Layout, 'columns'>): string | null {
+/** Whether a column says of what a row is. */
+export const namesRows = ({ columns }: Pick<Layout, 'columns'>): boolean =>
+  columns.some((c) => c.as === 'string' || c.as === 'inverter');
+
+/** Why a file can't be read with this layout yet; null: it can. `headers`: what its columns are called. */
+export function layoutFault(layout: Pick<Layout, 'columns'>, headers: readonly string[] = []): string | null {
+  const { columns } = layout;
   const has = (as: ColumnUse['as']) => columns.some((c) => c.as === as);
   if (!has('at') && !has('date')) return 'Choose the column with the date and time.';
   const values = columns.filter(isQuantity);
   if (values.length === 0)
     return 'Choose at least one column with voltage, current, power, energy or temperature.';
-  const rowNames = has('string') || has('inverter');
-  if (!rowNames && values.some((c) => c.of === null))
-    return 'Say of what each column of figures is, or choose the column that names the string or the inverter.';
+  const loose = columns.flatMap((c, i) =>
+    isQuantity(c) && c.of === null ? [headers[i] ?? `column ${i + 1}`] : [],
+  );
+  if (!namesRows(layout) && loose.length > 0)
+    return `Say of what "${loose[0]}"${loose.length > 1 ? ` and ${loose.length - 1} more` : ''} is, or set it to not used; or choose the column that names the string or the inverter of each row.`;
   if (has('input') && !has('inverter')) return 'An input needs the column that names its inverter.';
   if (has('position') && !has('string')) return 'A position needs the column that names its string.';
   const seen = new Set<string>();

@@ -77,7 +77,7 @@ describe('columns of a file', () => {
     expect(layoutFault({ ...base, columns: [{ as: 'string' }] })).toContain('date and time');
     expect(layoutFault({ columns: [{ as: 'at' }] })).toContain('at least one column');
     expect(layoutFault({ columns: [{ as: 'at' }, { as: 'power', unit: 'W', of: null }] })).toContain(
-      'of what',
+      'Say of what "column 2" is',
     );
     const twice = { as: 'power', unit: 'W', of: null } as const;
     expect(layoutFault({ columns: [{ as: 'at' }, { as: 'string' }, twice, twice] })).toContain('Two columns');

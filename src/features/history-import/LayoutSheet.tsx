@@ -2,6 +2,7 @@ import { Choice } from '../../components/ui/Choice';
 import { Sheet } from '../../components/ui/Sheet';
 import {
   isQuantity,
+  namesRows,
   PLACE_COLUMNS,
   PLACE_WORDS,
   subjectKey,
@@ -109,7 +110,7 @@ export function LayoutSheet({ facts, layout, known, siteZone, timeZones, wrong, 
                   label="of"
                   aria-label={`${header}: of what`}
                   value={use.of ? subjectKey(use.of) : ''}
-                  options={subjectOptions(subjects, subjectWords)}
+                  options={subjectOptions(subjects, subjectWords, namesRows(layout))}
                   onChange={(key) =>
                     set(i, { ...use, of: subjects.find((s) => subjectKey(s) === key) ?? null })
                   }

@@ -123,7 +123,7 @@ export function useHistoryImport(initial: HistoryPage) {
     }
   };
 
-  const wrong = layout ? layoutFault(layout) : null;
+  const wrong = layout ? layoutFault(layout, facts?.headers) : null;
   const apply = async (note: string) => {
     if (!checked || !layout || !facts) return;
     const control = new AbortController();

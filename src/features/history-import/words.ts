@@ -94,7 +94,11 @@ export const columnOptions = (places: readonly { value: string; label: string }[
 export const isQuantityName = (text: string): text is Quantity =>
   (QUANTITIES as readonly string[]).includes(text);
 
-export const subjectOptions = (subjects: readonly Subject[], words: (s: Subject) => string) => [
-  { value: '', label: 'what the row names' },
+export const subjectOptions = (
+  subjects: readonly Subject[],
+  words: (s: Subject) => string,
+  rowsNamed: boolean,
+) => [
+  { value: '', label: rowsNamed ? 'what the row names' : 'choose of what' },
   ...subjects.map((s) => ({ value: subjectKey(s), label: words(s) })),
 ];
