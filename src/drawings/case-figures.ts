@@ -18,6 +18,7 @@ export function unitsInWords(s: FiguresString): string {
   if (s.notShuttingDown > 0) parts.push(`${s.notShuttingDown} not shutting down`);
   if (s.stuck > 0) parts.push(`${s.stuck} stuck`);
   if (s.shutdown > s.stuck) parts.push(`${s.shutdown - s.stuck} in shutdown`);
+  if (s.unheard > 0) parts.push(`${s.unheard} unheard`);
   if (s.silent > 0) parts.push(`${s.silent} silent`);
   if (s.unconfirmed > 0) parts.push(`${s.unconfirmed} unconfirmed`);
   return parts.join(', ');

@@ -229,7 +229,9 @@ describe('closing a case', () => {
   /** The clock goes on and the sun with it: the site is moved to where it stands high again. */
   async function noonAt(at: Date): Promise<void> {
     const hours = at.getUTCHours() + at.getUTCMinutes() / 60;
-    await db.owner.query('update site set longitude = $1', [15 * (12 - hours) + 20]);
+    // an hour and a third past noon, and still on the globe
+    const longitude = ((15 * (12 - hours) + 20 + 540) % 360) - 180;
+    await db.owner.query('update site set longitude = $1', [longitude]);
   }
 
   it('asks what was done', async () => {

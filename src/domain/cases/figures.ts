@@ -41,6 +41,7 @@ export interface FiguresString {
   passing: number;
   shutdown: number;
   silent: number;
+  unheard: number;
   stuck: number;
   notShuttingDown: number;
   unconfirmed: number;

@@ -33,6 +33,7 @@ export function sampleString(change: Partial<FiguresString> = {}): FiguresString
     passing: 6,
     shutdown: 0,
     silent: 0,
+    unheard: 0,
     stuck: 0,
     notShuttingDown: 0,
     unconfirmed: 0,

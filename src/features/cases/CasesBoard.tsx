@@ -146,10 +146,12 @@ export function CasesBoard({ initial, view: initialView, timeZone }: Props) {
           move.reset();
         }}
       />
-      <p className="no-print mt-4 hidden text-sm text-ink-2 md:block">
-        Drag a card, or focus it and press <kbd>[</kbd> or <kbd>]</kbd> to move it; <kbd>?</kbd> lists all
-        keys.
-      </p>
+      {view.look === 'board' && (
+        <p className="no-print mt-4 hidden text-sm text-ink-2 md:block">
+          Drag a card, or focus it and press <kbd>[</kbd> or <kbd>]</kbd> to move it; <kbd>?</kbd> lists all
+          keys.
+        </p>
+      )}
     </>
   );
 }

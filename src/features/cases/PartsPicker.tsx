@@ -1,4 +1,4 @@
-import { useId } from 'react';
+import { useId, useState } from 'react';
 
 export interface PartDraft {
   string: string;
@@ -15,6 +15,12 @@ interface Props {
 /** What a case is about: strings, and positions of them; none named: the whole string. */
 export function PartsPicker({ strings, chosen, parts, onChange, error }: Props) {
   const id = useId();
+  // those chosen at first come first: a large site has more strings than its box shows
+  const [first] = useState(chosen);
+  const inOrder = [
+    ...strings.filter((s) => first.includes(s.id)),
+    ...strings.filter((s) => !first.includes(s.id)),
+  ];
   const toggle = (string: string, on: boolean) =>
     onChange({
       chosen: on ? [...chosen, string] : chosen.filter((s) => s !== string),
@@ -36,7 +42,7 @@ export function PartsPicker({ strings, chosen, parts, onChange, error }: Props) 
         <p className="text-ink-2">This site has no strings on its as-built yet.</p>
       ) : (
         <div className="flex max-h-[220px] flex-wrap gap-2 overflow-y-auto border border-rule p-2">
-          {strings.map((s) => (
+          {inOrder.map((s) => (
             <label
               key={s.id}
               className={`target inline-flex cursor-pointer items-center rounded border px-3 focus-within:outline focus-within:outline-2 focus-within:outline-petrol ${chosen.includes(s.id) ? 'border-ink bg-ink text-sheet' : 'border-rule bg-sheet text-ink'}`}

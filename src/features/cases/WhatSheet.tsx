@@ -5,6 +5,7 @@ import { Sheet } from '../../components/ui/Sheet';
 import type { CasePage } from '../../schemas/api/cases';
 import { TITLE_MAX, WHAT_MAX } from '../../schemas/api/cases';
 import { paths } from '../../schemas/paths';
+import { PartsPicker } from './PartsPicker';
 import type { CaseInHand } from './query';
 import { TextArea } from './TextArea';
 
@@ -44,7 +45,7 @@ export function WhatSheet({
       ) : (
         <p className="text-ink-2">Nothing is written down yet.</p>
       )}
-      <Parts page={hand.page} />
+      {!editing && <Parts page={hand.page} />}
     </Sheet>
   );
 }
@@ -52,9 +53,17 @@ export function WhatSheet({
 function EditForm({ hand, onDone }: { hand: CaseInHand; onDone: () => void }) {
   const { page, send, change } = hand;
   // what was there when it was opened: only what this person changed is sent, so that nobody else's words are undone
-  const [began] = useState({ title: page.case.title, what: page.case.what });
+  const [began] = useState({
+    title: page.case.title,
+    what: page.case.what,
+    about: {
+      chosen: page.case.strings.map((s) => s.id),
+      parts: page.case.parts.map((p) => ({ string: p.stringId, position: p.position })),
+    },
+  });
   const [title, setTitle] = useState(began.title);
   const [what, setWhat] = useState(began.what);
+  const [about, setAbout] = useState(began.about);
   return (
     <form
       className="grid gap-4"
@@ -67,6 +76,7 @@ function EditForm({ hand, onDone }: { hand: CaseInHand; onDone: () => void }) {
             version: page.case.version,
             ...(title === began.title ? {} : { title }),
             ...(what === began.what ? {} : { what }),
+            ...(about === began.about ? {} : { strings: about.chosen, parts: about.parts }),
           },
           onDone,
         );
@@ -86,6 +96,13 @@ function EditForm({ hand, onDone }: { hand: CaseInHand; onDone: () => void }) {
         maxLength={WHAT_MAX}
         error={send.error?.fault('what') ?? null}
         onChange={setWhat}
+      />
+      <PartsPicker
+        strings={page.strings}
+        chosen={about.chosen}
+        parts={about.parts}
+        error={send.error?.fault('strings') ?? send.error?.fault('parts') ?? null}
+        onChange={setAbout}
       />
       <div className="flex flex-wrap gap-2">
         <Button type="submit" weight="primary" disabled={send.isPending}>

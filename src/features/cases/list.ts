@@ -1,5 +1,5 @@
 import { CASE_KIND_WORDS, CASE_STATES, isClosed } from '../../domain/cases/cases';
-import { countAtStart, counted } from '../../drawings/numbers';
+import { countAtStart } from '../../drawings/numbers';
 import type { CaseItem, CasesPage, CasesView } from '../../schemas/api/cases';
 
 export const CASES_DEFAULTS: CasesView = {
@@ -80,7 +80,7 @@ export function casesFinding({ cases, me }: CasesPage): { finding: string; sente
       sentence: 'Open one from a cause, from a string, or by hand; it keeps the figures of that minute.',
     };
   const parts = [
-    overdue > 0 ? `${counted(overdue, 'is', 'are')} overdue` : 'none is overdue',
+    overdue > 0 ? `${overdue} ${overdue === 1 ? 'is' : 'are'} overdue` : 'none is overdue',
     mine > 0 ? `${mine} ${mine === 1 ? 'is' : 'are'} yours` : '',
     nobodys > 0 ? `${nobodys} ${nobodys === 1 ? 'has' : 'have'} nobody yet` : '',
   ].filter(Boolean);

@@ -132,7 +132,7 @@ export interface CasePage {
   photos: CasePhoto[];
   people: { id: string; name: string }[];
   contact: { name: string; phone: string };
-  strings: { id: string; name: string }[]; // of the site
+  strings: { id: string; name: string; units: number }[]; // of the site
 }
 
 export const TITLE_MAX = 160;

@@ -11,19 +11,36 @@ export interface StringOfSite {
   id: number;
   ref: string;
   name: string;
+  /** Serials by position; null: no unit there. */
+  slots: Map<number, string | null>;
 }
 
-/** Strings of a site by their public identifiers; what is not of the site is missing. */
+/** Strings of a site by their public identifiers, with what sits where; what is not of the site is missing. */
 export async function stringsByRef(
   tx: Tx,
   siteId: number,
   refs: readonly string[],
 ): Promise<Map<string, StringOfSite>> {
-  const { rows } = await tx.raw<{ rows: StringOfSite[] }>(
-    `select s.id, s.ref, s.name from string s where s.site_id = :siteId and s.ref = any (cast(:refs as uuid[]))`,
+  const { rows } = await tx.raw<{
+    rows: { id: number; ref: string; name: string; positions: number[]; serials: (string | null)[] }[];
+  }>(
+    `select s.id, s.ref, s.name,
+            coalesce(array_agg(sl.position::int4 order by sl.position) filter (where sl.id is not null), '{}') as positions,
+            coalesce(array_agg(u.serial order by sl.position) filter (where sl.id is not null), '{}') as serials
+     from string s
+     left join slot sl on sl.string_id = s.id
+     left join placement p on p.slot_id = sl.id and p.placed_to is null
+     left join unit u on u.id = p.unit_id
+     where s.site_id = :siteId and s.ref = any (cast(:refs as uuid[]))
+     group by s.id`,
     { siteId, refs: [...refs] },
   );
-  return new Map(rows.map((r) => [r.ref, r]));
+  return new Map(
+    rows.map(({ positions, serials, ...s }) => [
+      s.ref,
+      { ...s, slots: new Map(positions.map((at, i) => [at, serials[i] ?? null])) },
+    ]),
+  );
 }
 
 export interface StaffPerson {

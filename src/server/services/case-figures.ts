@@ -41,6 +41,7 @@ function stringOf(s: StringNow, sums: StringSums | undefined, withUnits: boolean
     passing: s.counts.passing,
     shutdown: s.counts.shutdown,
     silent: s.counts.silent,
+    unheard: s.counts.unheard,
     stuck: s.counts.stuck,
     notShuttingDown: s.counts.notShuttingDown,
     unconfirmed: s.counts.unconfirmed,

@@ -60,7 +60,7 @@ export async function casePage(tx: Tx, actor: Actor, ref: string, at: Date): Pro
     photos: await photosOf(tx, ref),
     people: named(staff),
     contact: kept.contact,
-    strings: (await stringChoices(tx, kept.siteRowId)).map(({ id, name }) => ({ id, name })),
+    strings: await stringChoices(tx, kept.siteRowId),
   };
 }
 

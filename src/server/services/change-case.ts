@@ -151,21 +151,12 @@ async function changeFacts(by: Changer, kept: LockedCase, body: Facts): Promise<
   }
   if (body.strings !== undefined || body.parts !== undefined) {
     const names = await stringNames(tx, kept.stringIds);
-    const next = await partsOf(
-      tx,
-      kept.siteId,
-      {
-        strings: body.strings ?? [...names.keys()],
-        parts: body.parts ?? kept.parts.map((p) => ({ string: p.stringId, position: p.position })),
-      },
-      new Map(),
-    );
-    const serial = new Map(kept.parts.map((p) => [`${p.stringId} ${p.position}`, p.serial]));
+    const next = await partsOf(tx, kept.siteId, {
+      strings: body.strings ?? [...names.keys()],
+      parts: body.parts ?? kept.parts.map((p) => ({ string: p.stringId, position: p.position })),
+    });
     change.stringIds = next.stringIds;
-    change.parts = next.parts.map((p) => ({
-      ...p,
-      serial: serial.get(`${p.stringId} ${p.position}`) ?? p.serial,
-    }));
+    change.parts = next.parts;
     const from = partsInWords(kept.parts, [...names.values()]);
     const to = partsInWords(change.parts, [...(await stringNames(tx, next.stringIds)).values()]);
     if (from !== to) says('parts', from || 'none', to || 'none');

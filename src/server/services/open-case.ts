@@ -56,13 +56,12 @@ export function personAmong(people: readonly StaffPerson[], ref: string, field: 
   throw new AppError('invalid', { message, fields: [wrong(field, message)] });
 }
 
-/** Units by string and position, with the names and serials that the figures have. @throws AppError invalid */
+/** Units by string and position, with the names and serials of the as-built. @throws AppError invalid */
 export async function partsOf(
   tx: Tx,
   siteId: number,
   call: Pick<CaseToOpen, 'strings' | 'parts'>,
-  slots: ReadonlyMap<string, readonly { position: number; serial: string | null }[]>,
-): Promise<{ stringIds: number[]; parts: CasePart[] }> {
+): Promise<{ stringIds: number[]; stringRefs: string[]; parts: CasePart[] }> {
   const refs = [...new Set([...call.strings, ...call.parts.map((p) => p.string)])];
   const strings = await stringsByRef(tx, siteId, refs);
   if (strings.size < refs.length) {
@@ -70,16 +69,21 @@ export async function partsOf(
     throw new AppError('invalid', { message, fields: [wrong('strings', message)] });
   }
   const parts = call.parts.map(({ string, position }) => {
-    const { name } = found(strings.get(string), 'string');
-    const slot = slots.get(string)?.find((s) => s.position === position);
-    if (position !== null && slots.has(string) && !slot) {
+    const { name, slots } = found(strings.get(string), 'string');
+    if (position !== null && !slots.has(position)) {
       const message = `${name} has no position ${position}. Choose one of its positions.`;
       throw new AppError('invalid', { message, fields: [wrong('parts', message)] });
     }
-    return { stringId: string, stringName: name, position, serial: slot?.serial ?? null };
+    return {
+      stringId: string,
+      stringName: name,
+      position,
+      serial: position === null ? null : (slots.get(position) ?? null),
+    };
   });
   return {
     stringIds: refs.flatMap((ref) => strings.get(ref)?.id ?? []).sort((a, b) => a - b),
+    stringRefs: refs,
     parts,
   };
 }
@@ -114,14 +118,8 @@ export async function openCase(tx: Tx, actor: Actor, call: CaseToOpen, at: Date)
       current: existing,
     });
   const assignee = call.assignee ? personAmong(await staffOf(tx), call.assignee, 'assignee') : null;
-  const refs = [...new Set([...call.strings, ...call.parts.map((p) => p.string)])];
-  const before = await gatherCaseFigures(tx, at, { siteId: site.id, stringRefs: refs });
-  const { stringIds, parts } = await partsOf(
-    tx,
-    site.id,
-    call,
-    new Map(before.strings.filter((s) => s.slots.length > 0).map((s) => [s.id, s.slots])),
-  );
+  const { stringIds, stringRefs, parts } = await partsOf(tx, site.id, call);
+  const before = await gatherCaseFigures(tx, at, { siteId: site.id, stringRefs });
   const made = await insertCase(tx, {
     ref: call.ref,
     siteId: site.id,
@@ -189,7 +187,7 @@ export async function openCase(tx: Tx, actor: Actor, call: CaseToOpen, at: Date)
       kind: call.kind,
       origin: call.origin,
       cause: cause?.ref ?? null,
-      strings: refs,
+      strings: stringRefs,
       assignee: assignee?.name ?? null,
       dueOn: call.dueOn ?? null,
     },
