@@ -1,6 +1,7 @@
 import type { ECharts } from 'echarts/core';
 import { lazy, Suspense, useCallback, useRef, useState, type KeyboardEvent, type ReactNode } from 'react';
 import type { Span } from './Canvas';
+import { ChartLegend } from './ChartLegend';
 import { ChartSketch } from './ChartSketch';
 import { ChartTable } from './ChartTable';
 import { saveCsv } from './chart-csv';
@@ -160,6 +161,7 @@ export function TimeChart({
           )}
         </div>
       </div>
+      <ChartLegend lines={model.lines} />
       {/* a canvas keeps its old width until it hears of the new one: it must not push the page meanwhile */}
       <div className="[overflow-x:clip]" style={{ minHeight: height }}>
         {asTable ? (

@@ -52,7 +52,7 @@ function columnsFor(low: LowOutput): Column<LowString>[] {
           >
             {r.string.name}
           </a>
-          <span className="block text-sm text-ink-2 md:hidden">
+          <span className="-mt-2 block text-sm leading-4 text-ink-2 md:hidden">
             {r.site.name} · {SIGNATURE_WORDS[r.signature].toLowerCase()}
           </span>
         </>

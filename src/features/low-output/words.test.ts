@@ -41,7 +41,7 @@ describe('the finding about low strings', () => {
       low([row('A1', { moneyDay: 0.6 }), row('A2', { openCase: { id: 'x', number: 7 } })]),
     );
     expect(plain(heading)).toBe('Two of 40 strings make less than they should');
-    expect(plain(sentence)).toBe('Together 4.0 kWh a day, €0.60. One without a case.');
+    expect(plain(sentence)).toBe('Together 4.0 kWh a day, €0.60 where a price is set. One without a case.');
   });
 
   it('does not take what is not judged for sound', () => {

@@ -38,9 +38,10 @@ export function lowFinding(low: LowOutput): { heading: string; sentence: string 
     };
   const kWh = sum(rows.map((r) => r.lossKWhDay));
   const worth = sum(rows.map((r) => r.moneyDay));
+  const priced = rows.every((r) => r.moneyDay !== null) ? '' : ' where a price is set';
   const open = rows.filter((r) => r.openCase === null).length;
   return {
     heading: `${countAtStart(rows.length)} of ${counted(low.judged, 'string')} ${rows.length === 1 ? 'makes' : 'make'} less than ${rows.length === 1 ? 'it' : 'they'} should`,
-    sentence: `Together ${energy(kWh * 1000)} a day${low.currency && worth > 0 ? `, ${money(worth, low.currency)}` : ''}. ${open === 0 ? 'Each has a case.' : `${countAtStart(open)} without a case.`}${cant}${waiting}`,
+    sentence: `Together ${energy(kWh * 1000)} a day${low.currency && worth > 0 ? `, ${money(worth, low.currency)}${priced}` : ''}. ${open === 0 ? 'Each has a case.' : `${countAtStart(open)} without a case.`}${cant}${waiting}`,
   };
 }

@@ -8,9 +8,10 @@ export function WhenNear({ height, children }: { height: number; children: React
   const room = (
     <div
       style={{ height }}
-      aria-hidden="true"
-      className="border-b border-t-2 border-b-rule border-t-ink bg-sheet"
-    />
+      className="border-b border-t-2 border-b-rule border-t-ink bg-sheet px-[18px] py-4 text-ink-2"
+    >
+      {near && <p role="status">Loading …</p>}
+    </div>
   );
   return (
     <div ref={ref} className="min-w-0">
