@@ -15,7 +15,7 @@ import { startSite, type RunningSite } from '../support/server';
  */
 const HALL = 'Old Tannery Market Hall';
 const CLINIC = 'Weirside Clinic';
-const PACE = 120;
+const PACE = 240;
 /** In the demo these never answer: one's radio is dead, two serials of the drawing are nowhere on the roof. */
 const MUTE = 3;
 const STUCK = [5, 9];
@@ -131,8 +131,8 @@ describe('the first day of a site', () => {
       .getByText('12 of 13 strings fell to 30 V or less; C2 is still above it.')
       .waitFor({ timeout: 60_000 });
     await trace.getByText('The same as a table').click();
+    await expect.poll(() => trace.locator('tbody tr').count(), SHORT).toBe(13);
     const rows = (await trace.locator('tbody tr').allInnerTexts()).map((r) => plain(r).split('\t'));
-    expect(rows).toHaveLength(13);
     const under = rows.filter((r) => /^after \d+ s$/.test(r[3] ?? '')).map((r) => r[0]);
     const dead = truth().strings.filter((s) => s.voltage <= 30);
     expect(under).toEqual(dead.map((s) => s.name));
@@ -203,14 +203,10 @@ describe('the owner of a roof', () => {
     const owner = await signedIn('customer');
     const page = await owner.newPage();
     await page.goto(`${site.url}/my-site`);
-    await page
-      .getByRole('link', { name: CLINIC })
-      .first()
-      .click({ timeout: 5000 })
-      .catch(() => undefined);
+    await page.waitForURL(`**/my-site/${fleet.site(CLINIC).ref}`); // of one roof there is no list
     expect(await heading(page)).not.toBe('');
-    expect(new URL(page.url()).pathname).toBe(`/my-site/${fleet.site(CLINIC).ref}`);
-    expect(await page.getByRole('button').count()).toBe(0);
+    // nothing to operate: only a report of what looks wrong can be sent
+    expect(await page.getByRole('button').allInnerTexts()).toEqual([expect.stringMatching(/^Send to /)]);
 
     for (const path of ['/', '/commissioning', '/shutdown', hallPath(), `/sites/${fleet.site(CLINIC).ref}`]) {
       const response = await page.goto(site.url + path);

@@ -102,7 +102,7 @@ describe('a module from its datasheet, on a phone', () => {
 
     await page.getByRole('button', { name: 'Save the module type' }).click();
     await page.getByText('Mono 410, 108 half cells is saved').waitFor();
-    expect(new URL(page.url()).pathname).toMatch(/^\/equipment\/modules\/[0-9a-f-]{36}$/);
+    await page.waitForURL(/\/equipment\/modules\/[0-9a-f-]{36}$/);
     await faultless(page);
     await page.reload();
     await hydrated(page);
@@ -123,7 +123,7 @@ describe('a module from its datasheet, on a phone', () => {
     expect(await page.getByRole('link', { name: 'Mono 410' }).count()).toBe(0);
     await page.getByText('Archived', { exact: true }).click();
     await page.getByRole('link', { name: 'Mono 410' }).waitFor();
-    expect(page.url()).toContain('show=archived');
+    await page.waitForURL(/show=archived/);
     await page.close();
   });
 });
@@ -265,7 +265,7 @@ describe('design checks', () => {
       .locator('visible=true')
       .first()
       .waitFor();
-    expect(after.url()).toContain('show=all');
+    await after.waitForURL(/show=all/);
     await faultless(after);
     await after.close();
   });

@@ -65,7 +65,7 @@ describe('the fleet', () => {
     await expect.poll(rows, SOON).toBe(3);
     await page.getByRole('radio', { name: 'Needs attention' }).check({ force: true });
     await expect.poll(rows, SOON).toBe(1);
-    expect(page.url()).toBe(`${site.url}/?show=attention`);
+    await page.waitForURL(`${site.url}/?show=attention`);
     await page.goBack();
     await expect.poll(rows, SOON).toBe(3);
     await open('/?q=clinic');
@@ -114,7 +114,7 @@ describe('a site', () => {
     await expect.poll(() => page.url(), SOON).toContain('kind=hazard_acknowledged');
     const events = page.getByRole('list', { name: 'Events, newest first' });
     await events.getByText('Sunniva Quill took on').waitFor();
-    expect(await events.getByRole('listitem').count()).toBe(1);
+    await expect.poll(() => events.getByRole('listitem').count(), SOON).toBe(1);
   });
 
   it('left no error in the console', () => {

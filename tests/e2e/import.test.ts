@@ -164,7 +164,7 @@ describe('strings and serials from a file', () => {
 
     await eventually(() => page.locator('h1').innerText()).toBe('12 rows would make 12 changes');
     await page.getByRole('button', { name: 'Import 12 rows' }).click();
-    expect(await page.getByText('Say why, in a few words').isVisible()).toBe(true);
+    await page.getByText('Say why, in a few words').waitFor();
     await page.getByLabel('Why', { exact: true }).fill('List of the installer');
     expect(await axeFaults(page)).toEqual([]);
     await page.getByRole('button', { name: 'Import 12 rows' }).click();

@@ -52,7 +52,7 @@ describe('a reading on a phone', () => {
     expect(first).toMatch(/%/);
     expect(first).toContain('All 14 units are in shutdown');
     expect(first).toContain('Does it follow the initiator?');
-    expect(page.url()).toContain('v=7.8');
+    await page.waitForURL(/v=7\.8/);
 
     // every target is large enough for a glove
     const small = await page.evaluate(() =>

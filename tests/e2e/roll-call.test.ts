@@ -14,7 +14,7 @@ import { startSite, type RunningSite } from '../support/server';
  * plant's own page.
  */
 const HALL = 'Old Tannery Market Hall';
-const PACE = 120;
+const PACE = 240;
 const LONG = { timeout: 90_000, interval: 500 };
 const SHORT = { timeout: 20_000, interval: 250 };
 
@@ -76,11 +76,11 @@ describe('a roll call on a phone', () => {
     await form.goto(at('roll-call'));
     await form.getByLabel('Who is on site').fill('Per Aalto');
     await form.getByRole('button', { name: 'Start the roll call' }).click();
-    expect(await form.locator('#run').innerText()).toContain('Confirm that this person is on site now.');
+    await form.locator('#run').getByText('Confirm that this person is on site now.').waitFor();
     expect(await form.getByLabel('Who is on site').inputValue()).toBe('Per Aalto');
     await form.getByLabel('This person is on site now').check();
     await form.getByRole('button', { name: 'Start the roll call' }).click();
-    expect(await form.locator('#run').innerText()).toContain('On site: Per Aalto');
+    await form.locator('#run').getByText('On site: Per Aalto').waitFor();
     await bare.close();
   });
 
@@ -97,7 +97,7 @@ describe('a roll call on a phone', () => {
     const write = dialog.getByRole('button', { name: `Replace ${drawn('B1', 2)}` });
     await write.click();
     // what was seen on the module, why, and the physical check
-    expect(await dialog.getByRole('alert').count()).toBe(3);
+    await expect.poll(() => dialog.getByRole('alert').count(), SHORT).toBe(3);
     expect(await axeFaults(page)).toEqual([]);
     await dialog.getByLabel('What you read on the module').fill(`label reads ${stranger}, third row`);
     await dialog.getByLabel('Why').fill('copied wrongly');
@@ -133,7 +133,7 @@ describe('a roll call on a phone', () => {
     expect(await axeFaults(page)).toEqual([]);
     await page.getByRole('button', { name: 'Leave out B1-9' }).click();
     await expect.poll(() => heading(page), SHORT).toBe('One stop on the east roof');
-    expect(page.url()).toContain('stops=C2-7');
+    await page.waitForURL(/stops=C2-7/);
 
     await page.goto(`${at('walk')}?view=card`);
     await hydrated(page);
@@ -161,7 +161,7 @@ describe('two units in each other’s place', () => {
     const option = page.locator('#isolate-string option', { hasText: /^C3\b/ });
     await page.getByLabel('String to isolate').selectOption((await option.getAttribute('value')) ?? '');
     await page.getByRole('button', { name: 'Start watching' }).click();
-    expect(await page.getByRole('alert').count()).toBe(2);
+    await expect.poll(() => page.getByRole('alert').count(), SHORT).toBe(2);
     await page.getByLabel('Who isolates it').fill('Per Aalto');
     await page.getByLabel('A qualified person').check();
     await page.getByRole('button', { name: 'Start watching' }).click();

@@ -53,7 +53,7 @@ beforeAll(async () => {
       shutdownSwitchPlace: 'Beside the barn door',
       contactName: '',
       contactPhone: '',
-      reportIntervalS: 60,
+      reportIntervalS: 10,
       moduleType: MONO_430,
       unitType: BOTH_SIDES,
       planes: [{ name: 'South roof', surfaceTilt: 15, surfaceAzimuth: 180, albedo: 0.2 }],
@@ -119,6 +119,7 @@ describe('a new site on one phone', { timeout: 240_000 }, () => {
     await page.fill('[name="longitude"]', String(plan.longitude));
     await page.selectOption('[name="timeZone"]', plan.timeZone);
     await page.fill('[name="shutdownSwitchPlace"]', plan.shutdownSwitchPlace);
+    await page.fill('[name="reportIntervalS"]', String(plan.reportIntervalS));
     await look('a new site');
     await page.getByRole('button', { name: 'Create the site' }).tap();
     await page.waitForURL('**/as-built');
@@ -235,7 +236,7 @@ describe('a new site on one phone', { timeout: 240_000 }, () => {
     await page.getByLabel('I have read this').check();
     await button('Accept and go on').tap();
     await button('Start watching').tap();
-    await page.getByText('Reports of the strings arrive.').waitFor({ timeout: 90_000 }); // they come once a minute
+    await page.getByText('Reports of the strings arrive.').waitFor({ timeout: 90_000 });
     for (const string of STRINGS) await meter(string, 'before');
     await operate(true);
     await button(/^Initiator operated now/).tap();

@@ -93,7 +93,9 @@ export function useTest(initial: ShutdownTestPage, person: string): TestInHand {
       kept.change((k) => ({ queue: k.queue.filter((a) => !ids.has(a.id)) }));
     let timer: ReturnType<typeof setTimeout> | undefined;
     api<ShutdownTestPage>(paths.api.shutdownTestActs(ref), { method: 'POST', body: { acts: batch } })
-      .then((next) => {
+      .then(async (next) => {
+        // an answer under way may be from before these acts: it would take them off the screen again
+        await client.cancelQueries({ queryKey: key });
         setProblem(null);
         client.setQueryData(key, heard(next));
         sending.current = false;
