@@ -23,8 +23,10 @@ const DENSITY = 72 * 3;
 async function drawn(drawing: ReactElement, height: number): Promise<PaperDrawing> {
   const inner = renderToStaticMarkup(drawing).replace(/^<svg[^>]*>|<\/svg>$/g, '');
   const svg = `<svg xmlns="http://www.w3.org/2000/svg" width="${WIDTH}" height="${height}" viewBox="0 0 ${WIDTH} ${height}"><rect width="100%" height="100%" fill="${PAPER.sheet}"/>${textAsPaths(inner)}</svg>`;
+  // without transparency a PDF takes it as it is; a palette would cost more time than its bytes are worth
   const png = await sharp(Buffer.from(svg), { density: DENSITY })
-    .png({ palette: true, effort: 4 })
+    .flatten({ background: PAPER.sheet })
+    .png({ compressionLevel: 6 })
     .toBuffer();
   return { png, ratio: height / WIDTH };
 }
