@@ -39,7 +39,7 @@ export function ImportHistory({ initial }: { initial: HistoryPage }) {
       <p className="sr-only" role="status">
         {said.heading}
       </p>
-      <div className="grid gap-6">
+      <div className="grid grid-cols-1 gap-6">
         {busy && (
           <ProgressLine
             words={busy.words}
@@ -70,7 +70,7 @@ export function ImportHistory({ initial }: { initial: HistoryPage }) {
           </Notice>
         )}
         {/* while a file is being sent nothing may change what is sent */}
-        <div className="grid gap-6" inert={busy?.stop ? true : undefined}>
+        <div className="grid grid-cols-1 gap-6" inert={busy?.stop ? true : undefined}>
           {checked && !made && checked.readings > 0 && (
             <PreviewSheet checked={checked} timeZone={timeZone} busy={busy !== null} onImport={work.apply} />
           )}

@@ -9,12 +9,12 @@ const here = (): string => window.location.origin;
 const elsewhere = (): string => '';
 
 /** The two calls of a logger that reports in batches. */
-export function ByHttps({ serial }: { serial: string }) {
+export function ByHttps() {
   const origin = useSyncExternalStore(never, here, elsewhere);
   const box =
     'my-2 block overflow-x-auto whitespace-pre rounded border border-rule bg-film px-3 py-3 text-sm';
   return (
-    <div className="max-w-[860px] text-[15px] leading-6">
+    <div className="max-w-[860px] pb-4 text-[15px] leading-6">
       <p>
         It fetches its roster, which names its strings with their slots, and sends the same messages as on the
         WebSocket, one a line:
@@ -29,8 +29,7 @@ curl -H "Authorization: Bearer TOKEN" -H "Content-Type: application/x-ndjson" \\
         The answer comes once everything is kept, and tells what was refused: which message, which field, what
         would do. Without an answer send all of it again; what comes twice is kept once. At most{' '}
         {BATCH_MESSAGES_MAX} messages and {BATCH_MAX_BYTES / MB} MB at a time, packed with gzip if you like,
-        and one batch of a logger ({serial}) after the other. 429 and 503 say in Retry-After when to come
-        back.
+        and one batch of a logger after the other. 429 and 503 say in Retry-After when to come back.
       </p>
     </div>
   );

@@ -51,7 +51,7 @@ export function LoggersBoard({ initial, mayManage }: Props) {
       >
         What is shown may be old.
       </NotRead>
-      <div className="grid gap-6">
+      <div className="grid grid-cols-1 gap-6">
         {page.loggers.length === 0 && (
           <Notice
             kind="empty"
@@ -71,7 +71,7 @@ export function LoggersBoard({ initial, mayManage }: Props) {
           />
         ))}
         <Fold title="A logger without our WebSocket reports by HTTPS" opens="How">
-          <ByHttps serial={page.loggers[0]?.serial ?? 'LOGGER'} />
+          <ByHttps />
         </Fold>
       </div>
       {doing?.kind === 'new' && (
