@@ -12,6 +12,7 @@ import { Notice } from '../../components/ui/Notice';
 import { useNow } from '../../components/ui/Time';
 import { api } from '../../lib/api';
 import { useLive } from '../../lib/live-hook';
+import { Meanwhile } from '../../lib/meanwhile';
 import { queryClient } from '../../lib/query-client';
 import type { Change } from '../../schemas/live';
 import type { ChangeKind } from '../../lib/live';
@@ -54,10 +55,12 @@ export function RollCall({ initial, mayRun, mayPlace, view, typed }: Props) {
   const siteId = initial.site.id;
   const key = ['roll-call', siteId];
   const client = queryClient();
+  const [meanwhile] = useState(() => new Meanwhile<Change>());
   const { data: page, error } = useQuery(
     {
       queryKey: key,
-      queryFn: ({ signal }) => api<RollCallPage>(paths.api.rollCall(siteId), { signal }),
+      queryFn: ({ signal }) =>
+        meanwhile.read(() => api<RollCallPage>(paths.api.rollCall(siteId), { signal }), patchRollCall),
       initialData: initial,
     },
     client,
@@ -66,6 +69,7 @@ export function RollCall({ initial, mayRun, mayPlace, view, typed }: Props) {
   const snapshots = useRef(new Set<string>());
   const heed = useCallback(
     (topic: string) => (change: Change, kind: ChangeKind) => {
+      meanwhile.heed(change);
       client.setQueryData<RollCallPage>(['roll-call', siteId], (old) => old && patchRollCall(old, change));
       // a second snapshot means that deltas may have been missed
       const missed = kind === 'snapshot' && snapshots.current.has(topic);
@@ -73,7 +77,7 @@ export function RollCall({ initial, mayRun, mayPlace, view, typed }: Props) {
       if (missed || (kind === 'delta' && runChanged(change)))
         void client.invalidateQueries({ queryKey: ['roll-call', siteId] });
     },
-    [client, siteId],
+    [client, siteId, meanwhile],
   );
   const roll = useLive(`roll-call:${siteId}`, heed('roll'));
   const site = useLive(`site:${siteId}`, heed('site'));
