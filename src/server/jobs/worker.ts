@@ -58,7 +58,7 @@ export async function startWorker(): Promise<void> {
   await listener.start();
   const telling = new TellWatch();
   await telling.start();
-  shared[KEY] = { runner, listener, telling };
+  shared[KEY] = { runner, life, listener, telling };
 }
 
 async function askForCauses(runner: Runner, siteId: number): Promise<void> {
