@@ -19,7 +19,7 @@ import {
   type LowOutput,
   type LowOutputView,
   type LowString,
-} from '../../schemas/api/low-output';
+} from '../../schemas/api/low-output-rows';
 import type { SavedView } from '../../schemas/api/saved-views';
 import { paths } from '../../schemas/paths';
 import { lowFinding, SIGNATURE_WORDS } from './words';

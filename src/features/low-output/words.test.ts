@@ -1,5 +1,6 @@
 import { describe, expect, it } from 'vitest';
-import { lowOutputView, lowRows, type LowOutput, type LowString } from '../../schemas/api/low-output';
+import { lowOutputView } from '../../schemas/api/low-output';
+import { lowRows, type LowOutput, type LowString } from '../../schemas/api/low-output-rows';
 import { lowFinding } from './words';
 
 const row = (name: string, more: Partial<LowString> = {}): LowString => ({

@@ -15,7 +15,7 @@ import { useLive } from '../../lib/live-hook';
 import { queryClient } from '../../lib/query-client';
 import { useViewInUrl } from '../../lib/view-in-url';
 import type { StringHistory, StringPage } from '../../schemas/api/string';
-import { UNITS_CHOSEN_MOST, type WorkbenchView } from '../../schemas/api/workbench';
+import { UNITS_CHOSEN_MOST, type WorkbenchView } from '../../schemas/api/workbench-view';
 import { paths } from '../../schemas/paths';
 import { cautionOf, nextSteps, readingsOf } from './advice';
 import { CopyLink } from './CopyLink';

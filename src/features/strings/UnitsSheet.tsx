@@ -6,7 +6,7 @@ import { NotRead } from '../../components/ui/NotRead';
 import { Segmented } from '../../components/ui/Segmented';
 import { Sheet } from '../../components/ui/Sheet';
 import type { StringPage, UnitQuantity } from '../../schemas/api/string';
-import { UNITS_CHOSEN_MOST, type WorkbenchView } from '../../schemas/api/workbench';
+import { UNITS_CHOSEN_MOST, type WorkbenchView } from '../../schemas/api/workbench-view';
 import { unitsChart } from './history-model';
 import { unitsCsvHref, unitsQuery, type UnitsView } from './queries';
 import { unitsInAddress } from './view';

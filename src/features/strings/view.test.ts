@@ -24,6 +24,10 @@ const slot = (position: number, verdict: SlotNow['verdict'] = 'ok'): SlotNow => 
 const slots = [slot(1), slot(2, 'stuck'), slot(3), slot(4, 'flapping')];
 
 describe('the view in the address', () => {
+  it('has the defaults that the server reads from an empty one', () => {
+    expect(workbenchView.parse({})).toEqual(DEFAULTS);
+  });
+
   it('begins with the units in trouble, and keeps "none" apart from nothing said', () => {
     expect(chosenUnits(DEFAULTS, slots)).toEqual([2, 4]);
     expect(chosenUnits({ units: 'none' }, slots)).toEqual([]);

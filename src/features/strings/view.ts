@@ -1,10 +1,10 @@
 import { addressOf } from '../../lib/view-in-url';
 import type { SlotNow } from '../../schemas/api/now';
-import { UNITS_CHOSEN_MOST, workbenchView, type WorkbenchView } from '../../schemas/api/workbench';
+import { UNITS_CHOSEN_MOST, WORKBENCH_DEFAULTS, type WorkbenchView } from '../../schemas/api/workbench-view';
 
 /** What the page shows, as its address says it. */
 
-export const DEFAULTS: WorkbenchView = workbenchView.parse({});
+export const DEFAULTS: WorkbenchView = WORKBENCH_DEFAULTS;
 
 /** Positions in trouble: those that a person looks at first. */
 export const inTrouble = (slots: readonly SlotNow[]): number[] =>

@@ -2,15 +2,15 @@ import { z } from 'zod';
 import { COMMANDS, UNIT_STATES, VERDICTS } from '../../domain/verdicts/codes';
 import { HISTORY_QUANTITIES, HISTORY_RANGES, UNIT_QUANTITIES } from './string';
 import { id } from './now';
+import type { WorkbenchView } from './workbench-view';
 
 /** A string looked into: what its page shows as its address says, and what the workbench's endpoints answer. */
 
-export const UNITS_CHOSEN_MOST = 8;
 const epoch = z.coerce.number().int().min(1_500_000_000).max(4_102_444_800);
 const day = z.iso.date('Give a day as 2026-11-03');
 
 /** Every choice of the page, as it stands in the address; what can't be read there is as if it were left out. */
-export const workbenchView = z.object({
+export const workbenchView: z.ZodType<WorkbenchView> = z.object({
   range: z.enum(HISTORY_RANGES).catch('day'),
   quantity: z.enum(HISTORY_QUANTITIES).catch('voltage'),
   /** The last day shown, at the site; empty: today. */
@@ -34,7 +34,7 @@ export const workbenchView = z.object({
   /** The heat strip: against the string's middle, or the figures themselves. */
   scale: z.enum(['middle', 'figures']).catch('middle'),
 });
-export type WorkbenchView = z.infer<typeof workbenchView>;
+export type { WorkbenchView };
 
 export const momentQuery = z.strictObject({ at: epoch });
 export const dayQuery = z.strictObject({ on: day.optional() });

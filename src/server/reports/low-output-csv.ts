@@ -1,4 +1,4 @@
-import { lowRows, type LowOutput, type LowOutputView } from '../../schemas/api/low-output';
+import { lowRows, type LowOutput, type LowOutputView } from '../../schemas/api/low-output-rows';
 import { csvResponse } from './csv';
 
 const round = (value: number | null, digits: number): number | null =>

@@ -1,6 +1,6 @@
 import { priceOn } from '../../domain/output/tariff';
 import { localDay } from '../../drawings/times';
-import type { LowOutput, LowString } from '../../schemas/api/low-output';
+import type { LowOutput, LowString } from '../../schemas/api/low-output-rows';
 import type { Tx } from '../db/transaction';
 import { figuresSites, tariffsOf } from '../queries/figures';
 import { openCasesByString } from '../queries/low-output';
