@@ -24,7 +24,7 @@ describe('what was planted', () => plantedAttacks(scene));
 describe('the log of all this, at its most talkative', () => {
   it('names no password, token, code, key or session', () => {
     const said = made.site.output();
-    expect(said).toContain('a token that nobody knows'); // it did talk
+    expect(said.length).toBeGreaterThan(1000); // it did talk
     expect([...made.secrets].filter((secret) => said.includes(secret))).toEqual([]);
   });
 });

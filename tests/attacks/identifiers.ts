@@ -5,8 +5,8 @@ import { writeOneOfEach, writeSealed } from './rows';
 import { emailOf, FOREIGN, NOT_GIVEN, OWN, STRANGER, type Scene } from './scene';
 
 const ABSENT = '00000000-0000-4000-8000-00000000dead';
-/** In an address, but no identifier of a thing: tokens are tried elsewhere, families and channels are words. */
-const WORDS = ['family', 'token'];
+/** In an address, but no identifier of a thing. */
+const WORDS = ['family'];
 /** The tables whose things a name in an address stands for. */
 const NAMED: Record<string, readonly string[]> = {
   site: ['site'],
@@ -31,6 +31,8 @@ const NAMED: Record<string, readonly string[]> = {
   webhook: ['webhook'],
   delivery: ['webhook_delivery'],
   import: ['history_import'],
+  view: ['saved_view'],
+  token: ['api_token'], // those of letters and shared pages, which are public, are tried elsewhere
 };
 const OF_ORGANISATION = 'organisation_id = (select organisation_id from site where id = $1)';
 type Things = Map<string, string>;
@@ -38,7 +40,7 @@ type Things = Map<string, string>;
 /** Every thing that has an identifier, asked for at every address that takes one, by those who may not see it. */
 export function identifierAttacks(scene: () => Scene): void {
   const names = (route: Route): string[] => [...route.file.matchAll(/\[(\w+)\]/g)].map((m) => m[1] ?? '');
-  const named = ROUTES.filter((r) => names(r).some((n) => !WORDS.includes(n)));
+  const named = ROUTES.filter((r) => r.permission !== 'public' && names(r).some((n) => !WORDS.includes(n)));
 
   /** An identifier of each table that a name in an address may stand for, of a site or its organisation. */
   async function identifiersOf(siteName: string, among: 'site' | 'organisation'): Promise<Things> {
@@ -51,14 +53,12 @@ export function identifierAttacks(scene: () => Scene): void {
     const things: Things = new Map();
     for (const [table, { site, org }] of columns.map((c) => [c.name, c] as const)) {
       if (!Object.values(NAMED).flat().includes(table)) continue;
-      const of =
-        table === 'site'
-          ? 'id = $1'
-          : site
-            ? 'site_id = $1'
-            : org && among === 'organisation'
-              ? OF_ORGANISATION
-              : '';
+      const ways = [
+        ...(table === 'site' ? ['id = $1'] : []),
+        ...(site ? ['site_id = $1'] : []),
+        ...(org && among === 'organisation' ? [OF_ORGANISATION] : []),
+      ];
+      const of = ways.join(' or ');
       if (!of) continue;
       const { rows } = await db.owner.query<{ ref: string }>(
         `select ref from ${table} where ${of} order by id limit 1`,

@@ -168,6 +168,16 @@ export async function writeOneOfEach(owner: pg.Pool, siteId: number): Promise<vo
     created_by: person,
     active: false,
   });
+  await add('saved_view', { organisation_id: organisation, person_id: person, list: 'fleet', name: 'Mine' });
+  await add('api_token', {
+    organisation_id: organisation,
+    person_id: person,
+    name: 'Desk',
+    scopes: ['read'],
+    hash: hash(unique),
+    ending: 'abcd',
+    expires_at: later,
+  });
   await add('gateway', { site_id: site, logger_id: logger, number: 200, name: 'North ridge' });
 }
 
