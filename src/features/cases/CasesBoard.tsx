@@ -140,7 +140,15 @@ export function CasesBoard({ initial, view: initialView, timeZone }: Props) {
         move={closing && { number: closing.item.number, to: closing.to }}
         fault={move.error?.fault('note') ?? move.error?.message ?? null}
         busy={move.isPending}
-        onMove={(note) => closing && move.mutate({ ...closing, note })}
+        onMove={(note) =>
+          closing &&
+          move.mutate({
+            // as it stands by now, where somebody changed it while the dialog was open
+            item: page.cases.find((c) => c.id === closing.item.id) ?? closing.item,
+            to: closing.to,
+            note,
+          })
+        }
         onClose={() => {
           setClosing(null);
           move.reset();

@@ -23,6 +23,8 @@ export function FactsSheet({ hand }: { hand: CaseInHand }) {
   const { page, send, change } = hand;
   const c = page.case;
   const [closing, setClosing] = useState<CaseState | null>(null);
+  // what somebody else did is told on the page, which a dialog would cover; the note goes with the sending again
+  if (hand.meanwhile && closing) setClosing(null);
   const facts = (some: {
     assignee?: string | null;
     dueOn?: string | null;
