@@ -45,6 +45,8 @@ export const FEATURES = [
   'planned-works',
   'notices',
   'webhooks',
+  'history-import',
+  'loggers',
 ] as const;
 const AREAS = FEATURES.map((name) => `src/features/${name}`);
 
@@ -93,6 +95,8 @@ export const TABLE: readonly Row[] = [
       'notices',
       'saved-views',
       'settings',
+      'history-import',
+      'time',
     ],
   },
   { folder: 'src/schemas', may: ['src/domain'], packages: ['zod'], subfolders: ['api'] },
@@ -116,6 +120,8 @@ export const TABLE: readonly Row[] = [
       'capture',
       'saved-views',
       'placements',
+      'table-file',
+      'logger-token',
     ],
   },
   { folder: 'src/features', may: [], packages: [], subfolders: FEATURES },
