@@ -48,7 +48,7 @@ async function worker(): Promise<ChildProcess> {
     stdio: ['pipe', 'pipe', 'inherit'],
   });
   children.push(child);
-  await once(child.stdout!, 'data');
+  await once(child.stdout, 'data');
   return child;
 }
 const kill = async (child: ChildProcess): Promise<void> => {

@@ -202,12 +202,14 @@ function weakDays(
     part(Float64Array.from(n.excluded)).forEach((e, i) => {
       if (e !== 0) sound[i] = NaN;
     });
-    const input: UnitVoltages = {
-      // what was reported before a unit came to its slot is another's
-      voltage: columnsIn.map((c, u) => ((s.placedS[u] ?? Infinity) > fromS ? part(c).fill(NaN) : part(c))),
-      current: sound,
-      bypassGroups: s.bypassGroups,
-    };
+    // what was reported before a unit came to its slot is another's
+    const voltage = columnsIn.map((c, u) =>
+      (s.placedS[u] ?? Infinity) > fromS ? part(c).fill(NaN) : part(c),
+    );
+    sound.forEach((_, i) => {
+      if (voltage.every((v) => Number.isNaN(v[i]!))) sound[i] = NaN;
+    });
+    const input: UnitVoltages = { voltage, current: sound, bypassGroups: s.bypassGroups };
     return enoughToTell(input) ? weakUnits(input, limits.weakUnitLoss) : null;
   });
 }
