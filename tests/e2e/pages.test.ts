@@ -127,6 +127,7 @@ const PAGES: readonly Shown[] = [
     path: () => `/sites/${refOf(SCHOOL)}/strings/${stringOf(SCHOOL, 'A1')}`,
     file: 'sites/[site]/strings/[string].astro',
   },
+  { name: 'low strings', role: 'analyst', path: () => '/low-output', file: 'low-output.astro' },
   {
     name: 'the walk over a roof',
     role: 'technician',

@@ -19,22 +19,17 @@ import { annotation } from '../../src/schemas/api/annotations';
 import { savedView } from '../../src/schemas/api/saved-views';
 import { stringHistory, stringUnits } from '../../src/schemas/api/string';
 import { stringExplanations, stringHeat, stringLoop, stringMoment } from '../../src/schemas/api/workbench';
-import { asActor, asIngest } from '../../src/server/db/transaction';
-import { writeOutputDays } from '../../src/server/queries/output-days';
+import { asActor } from '../../src/server/db/transaction';
 import { readLowOutput } from '../../src/server/services/low-output';
-import { generator, samplePlane } from '../../src/domain/output/sample-plane';
-import { planeReference } from '../../src/domain/output/plane-reference';
-import { judgeOutput } from '../../src/domain/output/low-output';
 import { testDatabase, type TestDatabase } from '../support/database';
 import { ask } from '../support/endpoint';
 import { testFleet, type TestFleet } from '../support/fleet';
+import { judgeLow, LOOP_OHM as OHM, reportHours } from '../support/workbench-scene';
 
 const HALL = 'Old Tannery Market Hall';
 const NOW = new Date(Math.floor(Date.now() / 900_000) * 900_000);
 const minutesAgo = (n: number) => new Date(NOW.getTime() - n * 60_000);
 const epoch = (at: Date) => Math.floor(at.getTime() / 1000);
-/** Ohm between the units of B3 and its input. */
-const OHM = 0.4;
 
 let db: TestDatabase;
 let fleet: TestFleet;
@@ -52,72 +47,6 @@ const site = () => {
 };
 let siteRef = '';
 
-/**
- * Three hours of reports of every string, current rising and falling: B3's units 5 and 9 in shutdown for the last hour,
- * nothing heard between 120 and 100 minutes ago; its input measures what a resistance leaves of the sum.
- */
-async function report(): Promise<void> {
-  await db.owner.query(
-    `insert into string_frame (at, mask, string_id, voltage_sum, power_sum, voltage, voltage_in, current, temperature,
-                               signal, via, state)
-     select f.at, (1::int8 << s.slots::int) - 1, s.id, (select sum(v) from unnest(f.v) v),
-            (select sum(v) from unnest(f.v) v) * f.ma / 10000, f.v, array_fill(4000::int2, array[s.slots::int]),
-            array_fill(f.ma::int2, array[s.slots::int]), array_fill(400::int2, array[s.slots::int]),
-            array_fill(-60::int2, array[s.slots::int]), array_fill(1::int2, array[s.slots::int]),
-            (select array_agg((case when x < 0 then 2 else 1 end)::int2) from unnest(f.v) x)
-     from string s
-     cross join lateral (
-       select at, (2000 + 6000 * abs(sin(extract(epoch from at) / 3600)))::int as ma,
-              (select array_agg((case when s.name = 'B3' and p in (5, 9) and at > $2::timestamptz - interval '1 hour'
-                                 then -50 else 3900 end)::int2 order by p) from generate_series(1, s.slots) p) as v
-       from generate_series($2::timestamptz - interval '3 hours', $2::timestamptz, interval '1 minute') as at) f
-     where s.site_id = $1 and not (s.name = 'B3' and f.at > $2::timestamptz - interval '120 minutes'
-                                   and f.at < $2::timestamptz - interval '100 minutes')`,
-    [site().id, NOW],
-  );
-  await db.owner.query(
-    `insert into input_frame (at, input_id, voltage, current)
-     select f.at, s.input_id, round(f.voltage_sum / 10.0 - $2::float8 * f.current[1] / 100.0), round(f.current[1] / 10.0)
-     from string s join string_frame f on f.string_id = s.id where s.id = $1`,
-    [stringOf('B3').id, OHM],
-  );
-}
-
-/** A night's judgement of B1 to B3, made by the judgement itself over a made-up plane: the second misses two units. */
-async function judge(): Promise<void> {
-  const plane = samplePlane(generator(5), {
-    strings: 8,
-    days: 5,
-    faults: new Map([[1, { kind: 'units_missing', count: 2 }]]),
-  });
-  const reference = planeReference(plane);
-  const days = Array.from({ length: 5 }, (_, d) =>
-    minutesAgo((6 - d) * 1440)
-      .toISOString()
-      .slice(0, 10),
-  );
-  const rows = ['B1', 'B2', 'B3'].map((name, i) => {
-    const finding = judgeOutput(plane, reference, i);
-    return {
-      stringId: stringOf(name).id,
-      day: days[4] ?? '',
-      outcome: finding.outcome,
-      method: finding.method,
-      ratio: finding.days.at(-1)?.ratio ?? null,
-      z: finding.days.at(-1)?.z ?? null,
-      lossWh: null,
-      expectedWh: null,
-      signature: finding.signature?.kind ?? null,
-      finding: {
-        ...finding,
-        days: finding.days.map((d) => ({ ...d, day: days[d.day] ?? '' })),
-        scope: 'string' as const,
-      },
-    };
-  });
-  await asIngest((tx) => writeOutputDays(tx, site().id, rows, NOW));
-}
-
 beforeAll(async () => {
   db = await testDatabase();
   fleet = await testFleet(db, [HALL]);
@@ -125,8 +54,12 @@ beforeAll(async () => {
   manager = await fleet.actor('manager@lowfield.example');
   stranger = await fleet.actor('manager@harbourline.example');
   siteRef = fleet.site(HALL).ref;
-  await report();
-  await judge();
+  await reportHours(db, { siteId: site().id, string: stringOf('B3').id }, NOW);
+  await judgeLow(
+    site().id,
+    ['B1', 'B2', 'B3'].map((name) => stringOf(name).id),
+    NOW,
+  );
 });
 afterAll(() => db.drop());
 
