@@ -148,7 +148,9 @@ export function Choices({ initial }: { initial: ChoicesPage }) {
                   onChange={(event) => change({ quiet: event.target.checked })}
                   className="h-5 w-5 accent-petrol"
                 />
-                Quiet hours: no letters, but hazards
+                {page.kinds.some((k) => k.fixed !== null)
+                  ? 'Quiet hours: no letters, but hazards'
+                  : 'Quiet hours: no letters'}
               </label>
               {draft.quiet && (
                 <div className="grid grid-cols-2 gap-3">
