@@ -23,6 +23,7 @@ export default defineConfig({
             'tests/reference/**/*.test.ts',
             'tests/bench/**/*.test.ts',
           ],
+          isolate: false, // a process and its modules for many small files, not for each
           setupFiles: [noise],
         },
       },
@@ -31,6 +32,7 @@ export default defineConfig({
         test: {
           name: 'architecture',
           include: ['tests/architecture/**/*.test.ts'],
+          isolate: false,
           setupFiles: [noise],
         },
       },
