@@ -280,6 +280,7 @@ export class OverHttps {
   private async committed(commits: readonly Promise<void>[]): Promise<void> {
     if (commits.length === 0) return;
     const { signal } = this.ending;
+    if (signal.aborted) throw unsure();
     const settled = new AbortController();
     const over = new Promise<'over'>((resolve) => {
       const timer = setTimeout(() => resolve('over'), COMMIT_WITHIN_MS);
