@@ -43,7 +43,7 @@ export interface WrittenLetter {
 
 /** Tells everything that has happened. Transactions of other databases of the cluster hold it up for a moment. */
 export async function tellAll(at = AT): Promise<void> {
-  for (let tries = 0; tries < 400; tries++) {
+  for (let tries = 0; tries < 1800; tries++) {
     if ((await tell(() => at)).held === 0) return;
     await new Promise((resolve) => setTimeout(resolve, 25));
   }
