@@ -1,5 +1,5 @@
 import { createHash } from 'node:crypto';
-import type { APIContext, APIRoute } from 'astro';
+import type { APIContext } from 'astro';
 import { z } from 'zod';
 import { tokenRefusal } from '../../domain/access/scopes';
 import { actorOfToken, holderOfBearer } from '../auth/bearer';
@@ -20,29 +20,25 @@ import { bodyOf, streamHeaders, takePlace } from './stream';
  * The one door of /api/v1: finds the operation, asks for the token and for nothing else (no cookie counts here), holds
  * it to its scopes, its person's role and its sites, counts it, checks what comes in, and answers.
  */
-export function door(_spec: { permission: 'public' }): APIRoute {
-  return async (context) => {
-    const headers = new Headers();
-    const fail = (error: unknown): Response => {
-      const response = problem(error, context.locals.requestId);
-      for (const [name, value] of headers) response.headers.set(name, value);
-      return response;
-    };
-    try {
-      const found = operationAt(context, headers);
-      if (found instanceof Response) return found;
-      const call = await admitted(context, found.operation, headers);
-      const input = inputOf(found.operation, found.params, context.url);
-      const response =
-        found.operation.kind === 'stream'
-          ? await streamed(context, found.operation, call, input.query)
-          : await answered(context, found.operation, call, input);
-      for (const [name, value] of headers) response.headers.set(name, value);
-      return response;
-    } catch (error) {
-      return fail(error);
-    }
+export async function throughDoor(context: APIContext): Promise<Response> {
+  const headers = new Headers();
+  const withHeaders = (response: Response): Response => {
+    for (const [name, value] of headers) response.headers.set(name, value);
+    return response;
   };
+  try {
+    const found = operationAt(context, headers);
+    if (found instanceof Response) return found;
+    const call = await admitted(context, found.operation, headers);
+    const input = inputOf(found.operation, found.params, context.url);
+    return withHeaders(
+      found.operation.kind === 'stream'
+        ? await streamed(context, found.operation, call, input.query)
+        : await answered(context, found.operation, call, input),
+    );
+  } catch (error) {
+    return withHeaders(problem(error, context.locals.requestId));
+  }
 }
 
 function operationAt(
