@@ -22,9 +22,11 @@ describe('identifiers', () => identifierAttacks(scene));
 describe('what was planted', () => plantedAttacks(scene));
 
 describe('the log of all this, at its most talkative', () => {
-  it('names no password, token, code, key or session', () => {
+  it('names no password, token, code, key or session', async () => {
+    const authorization = `Bearer ${made.secret('a-token-of-no-logger')}`;
+    await made.ask('/api/v1/ingest', { method: 'POST', body: {}, headers: { authorization } });
     const said = made.site.output();
-    expect(said.length).toBeGreaterThan(1000); // it did talk
+    expect(said).toContain('a token that nobody knows'); // it did talk
     expect([...made.secrets].filter((secret) => said.includes(secret))).toEqual([]);
   });
 });

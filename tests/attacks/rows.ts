@@ -168,7 +168,12 @@ export async function writeOneOfEach(owner: pg.Pool, siteId: number): Promise<vo
     created_by: person,
     active: false,
   });
-  await add('saved_view', { organisation_id: organisation, person_id: person, list: 'fleet', name: 'Mine' });
+  await add('saved_view', {
+    organisation_id: organisation,
+    person_id: person,
+    list: 'fleet',
+    name: `Mine ${site}`,
+  });
   await add('api_token', {
     organisation_id: organisation,
     person_id: person,
