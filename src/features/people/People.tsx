@@ -19,6 +19,7 @@ import { paths } from '../../schemas/paths';
 import type { InvitationItem, PeoplePage, PeopleView, PersonItem } from '../../schemas/api/people';
 import { listedPeople, PEOPLE_DEFAULTS, peopleFinding, pending } from './list';
 import { PersonForm, type PersonDraft } from './PersonForm';
+import { PersonTokens } from './PersonTokens';
 
 const KEY = ['people'];
 const SHORT_ROLE: Record<Role, string> = {
@@ -305,7 +306,7 @@ export function People({ initial, view: initialView, timeZone }: Props) {
                 })
               }
             />
-            <Tokens
+            <PersonTokens
               person={open.person}
               busy={send.isPending}
               onEnd={() =>
@@ -356,22 +357,6 @@ export function People({ initial, view: initialView, timeZone }: Props) {
         )}
       </Dialog>
     </>
-  );
-}
-
-/** Programs that act for somebody: a manager sees that there are some, and ends them. */
-function Tokens({ person, busy, onEnd }: { person: PersonItem; busy: boolean; onEnd: () => void }) {
-  if (person.tokens === 0) return null;
-  return (
-    <div className="mt-5 border-t border-rule pt-4">
-      <p>
-        {counted(person.tokens, 'token')} in force, by which programs act for {person.name}. Ended ones let
-        nobody in from that moment.
-      </p>
-      <Button className="mt-3" disabled={busy} onClick={onEnd}>
-        {person.tokens === 1 ? 'End the token' : `End all ${person.tokens} tokens`}
-      </Button>
-    </div>
   );
 }
 
