@@ -197,7 +197,8 @@ function byUnits(look: LookAgain): LookedAgain {
   const missing = voltageMissing(look);
   const wrong = [...wrongNow(look, any), ...missing];
   if (look.cause?.open && wrong.length === 0) wrong.push('the cause that it was opened from still holds');
-  if (wrong.length > 0) return answer('not_held', `${sentence(wrong)}.`, missing.length > 0 ? [] : voltageNow(look));
+  if (wrong.length > 0)
+    return answer('not_held', `${sentence(wrong)}.`, missing.length > 0 ? [] : voltageNow(look));
   const came = relapsed(look, any);
   if (came.length > 0) return answer('not_held', `${sentence(came)}.`, voltageNow(look));
   if (look.lightMs < AFTER_CLOSING.lightMs)
