@@ -117,7 +117,7 @@ export function SavedViews({ list, path, query, initial }: Props) {
                   <button
                     type="button"
                     className="target px-1.5 text-sm text-ink-2 hover:text-ink"
-                    aria-label={view.shared ? `Keep “${view.name}” to myself` : `Share “${view.name}”`}
+                    aria-label={view.shared ? `Unshare “${view.name}”` : `Share “${view.name}”`}
                     title={view.shared ? 'Keep to myself' : 'Share with the organisation'}
                     disabled={share.isPending}
                     onClick={() => share.mutate(view)}

@@ -48,15 +48,10 @@ export function MomentBar({ from, to, now, stepS, moment, timeZone, onMoment }: 
       </label>
       <output className="min-w-[104px] text-sm font-medium">{words}</output>
       <div className="flex gap-1">
-        <Button aria-label={`${stepS / 60} minutes earlier`} className="!px-3" onClick={() => go(-stepS)}>
+        <Button className="!px-3" onClick={() => go(-stepS)}>
           −{stepS / 60} min
         </Button>
-        <Button
-          aria-label={`${stepS / 60} minutes later`}
-          className="!px-3"
-          disabled={moment === null}
-          onClick={() => go(stepS)}
-        >
+        <Button className="!px-3" disabled={moment === null} onClick={() => go(stepS)}>
           +{stepS / 60} min
         </Button>
         <Button className="!px-3" disabled={moment === null} onClick={() => onMoment(null, true)}>

@@ -198,7 +198,7 @@ export default function NotesSheet({ page, atS, onMoment }: Props) {
               <button
                 type="button"
                 className="target ml-auto px-2 hover:text-ink hover:underline"
-                aria-label={`Take the note “${note.text.slice(0, 40)}” away`}
+                aria-label={`Take away the note “${note.text.slice(0, 40)}”`}
                 disabled={change.isPending}
                 onClick={() => change.mutate({ note, back: false })}
               >
