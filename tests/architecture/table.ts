@@ -93,6 +93,7 @@ export const TABLE: readonly Row[] = [
       'access',
       'equipment',
       'notices',
+      'cases',
       'saved-views',
       'settings',
       'history-import',
