@@ -1,6 +1,6 @@
 import { spawn, type ChildProcess } from 'node:child_process';
 import { once } from 'node:events';
-import { Logger, quickAddJob } from 'graphile-worker';
+import { Logger, addJobAdhoc } from 'graphile-worker';
 import pg from 'pg';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import type { SeededSite } from '../../seeds/plant/seeded';
@@ -59,7 +59,7 @@ const kill = async (child: ChildProcess): Promise<void> => {
 const count = async (sql: string, values: unknown[] = []): Promise<number> =>
   (await db.owner.query<{ n: number }>(`select count(*)::int as n from ${sql}`, values)).rows[0]?.n ?? 0;
 const add = (task: string, payload: unknown, key: string): Promise<unknown> =>
-  quickAddJob({ connectionString: db.url, logger: quiet }, task, payload, { jobKey: key, queueName: key });
+  addJobAdhoc({ connectionString: db.url, logger: quiet }, task, payload, { jobKey: key, queueName: key });
 const runs = (task: string, ended: boolean): Promise<number> =>
   count(`job_run where task = $1 and (ended_at is not null) = $2 and failed is null`, [task, ended]);
 

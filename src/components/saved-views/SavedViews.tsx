@@ -1,5 +1,5 @@
 import { useMutation, useQuery, useQueryClient } from '@tanstack/react-query';
-import { useState, type FormEvent } from 'react';
+import { useState } from 'react';
 import type { SavedList } from '../../domain/saved-views/lists';
 import { api, ApiError } from '../../lib/api';
 import type { NewSavedView, SavedView } from '../../schemas/api/saved-views';
@@ -35,7 +35,7 @@ function SaveForm({ list, query, onDone }: Pick<Props, 'list' | 'query'> & { onD
     },
   });
   const error = save.error instanceof ApiError ? save.error : null;
-  const submit = (event: FormEvent) => {
+  const submit = (event: { preventDefault(): void }) => {
     event.preventDefault();
     save.mutate({ list, name, query, shared });
   };

@@ -1,5 +1,5 @@
 import { useMutation, useQuery, useQueryClient } from '@tanstack/react-query';
-import { useState, type FormEvent } from 'react';
+import { useState } from 'react';
 import { fromWall, toWall } from '../../components/charts/local-time';
 import { Button } from '../../components/ui/Button';
 import { Choice } from '../../components/ui/Choice';
@@ -40,7 +40,7 @@ function NoteForm({ page, atS, onDone }: { page: StringPage; atS: number; onDone
   });
   const [local, setLocal] = useState<string | null>(null);
   const error = pin.error instanceof ApiError ? pin.error : null;
-  const submit = (event: FormEvent) => {
+  const submit = (event: { preventDefault(): void }) => {
     event.preventDefault();
     const begin = instant(from, site.timeZone);
     if (begin === null) return setLocal('Give the time of the note, day and hour.');

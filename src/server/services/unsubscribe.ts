@@ -26,7 +26,7 @@ const gone = () =>
   });
 
 /** A wrong token counts against whoever tries; a right one never, however many letters one mail provider answers for. */
-async function withToken<T>(token: string, address: string, work: (tx: Tx) => Promise<T>): Promise<T> {
+async function withToken<T>(address: string, work: (tx: Tx) => Promise<T>): Promise<T> {
   try {
     return await asSignIn(work);
   } catch (error) {
@@ -71,7 +71,7 @@ function wayOut(
 
 /** What a link would end. @throws AppError not_found · too_many */
 export function openWayOut(token: string, address: string): Promise<WayOut> {
-  return withToken(token, address, async (tx) => {
+  return withToken(address, async (tx) => {
     const { person, what, kinds } = await opened(tx, token);
     return wayOut(person, what, kinds);
   });
@@ -109,7 +109,7 @@ function change(
   at: Date,
   changes: (kinds: readonly NoticeKind[], person: SignedOutPerson) => [NoticeKind, How][],
 ): Promise<WayOut> {
-  return withToken(token, address, async (tx) => {
+  return withToken(address, async (tx) => {
     const { person, what, kinds } = await opened(tx, token);
     const list = changes(kinds, person);
     const before = wayOut(person, what, kinds);
