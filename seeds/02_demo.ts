@@ -3,6 +3,7 @@ import { DEMO_SEED, demoFleet } from '../simulator/scenarios/demo';
 import { seedHistory } from './history/fleet-history';
 import { clearFleet } from './plant/clear';
 import { seedPlant } from './plant/seed-plant';
+import { seedCases } from './records/cases';
 import { seedCommissioningRecords } from './records/commissioning';
 import { seedPrices } from './records/prices';
 
@@ -29,6 +30,7 @@ export async function seed(knex: Knex): Promise<void> {
     const plant = await seedPlant(tx, fleet, { secret, password: DEMO_PASSWORD });
     await seedCommissioningRecords(tx, plant, since);
     await seedPrices(tx);
+    await seedCases(tx, plant, since);
     await seedHistory(tx, fleet, plant, (line) => console.log(line));
   });
   // All but the frames: those are only ever read by string and time, and statistics of their arrays cost seconds.
