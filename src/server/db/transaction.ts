@@ -6,10 +6,10 @@ export type Tx = Knex.Transaction;
 
 /** From here on the transaction sees what the actor may see. */
 async function showTo(tx: Tx, actor: Pick<Actor, 'organisationId' | 'sites'>): Promise<void> {
-  await tx.raw(
-    `select set_config('wakeline.organisation', ?, true), set_config('wakeline.sites', ?, true)`,
-    [String(actor.organisationId), actor.sites === 'all' ? '*' : actor.sites.join(',')],
-  );
+  await tx.raw(`select set_config('wakeline.organisation', ?, true), set_config('wakeline.sites', ?, true)`, [
+    String(actor.organisationId),
+    actor.sites === 'all' ? '*' : actor.sites.join(','),
+  ]);
 }
 
 /** Runs `work` as the actor: row-level security sees the organisation and the sites for this transaction only. */
