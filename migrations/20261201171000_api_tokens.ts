@@ -46,7 +46,7 @@ export async function up(knex: Knex): Promise<void> {
   await knex.raw(`
     grant select, insert, update (ended_at, ended_by, last_used_at, last_address) on api_token to wakeline_app;
     grant select, insert, delete on api_reply to wakeline_app;
-    grant usage on all sequences in schema public to wakeline_app;
+    grant usage on all sequences in schema public to wakeline_app, wakeline_ingest;
   `);
 }
 

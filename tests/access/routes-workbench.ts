@@ -32,8 +32,8 @@ export const WORKBENCH: readonly Route[] = [
     permission: 'annotation.write',
     of: 'site',
     path: (t) => `/api/sites/${t.site}/annotations`,
-    body: { ref: 'none', text: '' },
-    served: [422],
+    body: { ref: NOBODY, string: null, from: '2026-11-03T10:43:00Z', to: null, text: 'Hail' },
+    served: [200, 201, 409], // the same note once more is that note; of somebody else it clashes
   },
   {
     file: 'api/sites/[site]/annotations/[annotation].ts',

@@ -32,7 +32,9 @@ afterAll(async () => {
   await db.drop();
 });
 beforeEach(async () => {
-  await db.owner.query('truncate install_check, meter_reading, string_sign_off, attachment cascade');
+  await db.owner.query(
+    'delete from install_check; delete from meter_reading; delete from string_sign_off; delete from attachment',
+  );
 });
 
 const count = async (table: string): Promise<number> =>

@@ -107,7 +107,7 @@ async function report(page: Page): Promise<void> {
     [words],
   );
   expect(rows).toEqual([{ origin: 'customer', state: 'open', figures: true }]);
-  await page.getByRole('radio', { name: 'Each month' }).check();
+  await page.getByText('Each month', { exact: true }).click();
   await page.getByText('on the first of the month').waitFor();
   expect((await db.owner.query('select every from roof_letter')).rows).toEqual([{ every: 'month' }]);
 }

@@ -8,6 +8,7 @@ import { testDatabase, type TestDatabase } from '../support/database';
 import { testFleet, type TestFleet } from '../support/fleet';
 import { startSite, type RunningSite } from '../support/server';
 import { writeDays } from '../support/days';
+import { standWatched, watchedPages, type Shown } from '../support/watched-pages';
 import { command, stand } from '../support/standing';
 import { ROUTES } from '../access/routes';
 
@@ -44,6 +45,7 @@ beforeAll(async () => {
     sun: 3,
     lost: 20,
   });
+  await standWatched(db.owner, fleet.site(SCHOOL));
   for (const [token, kiosk] of [
     [SHARED, false],
     [SCREEN, true],
@@ -85,14 +87,6 @@ async function pageFor(role: Role | null): Promise<Page> {
   return (await window).newPage();
 }
 
-interface Shown {
-  name: string;
-  role: Role | null;
-  path: () => string;
-  /** Of which file under src/pages. */
-  file: string;
-  status?: number;
-}
 const refOf = (name: string) => fleet.site(name).ref;
 const stringOf = (name: string, string: string) => fleet.site(name).strings.get(string)?.ref ?? '';
 const PAGES: readonly Shown[] = [
@@ -281,6 +275,7 @@ const PAGES: readonly Shown[] = [
   { name: 'the phone without a site', role: null, path: () => '/capture', file: 'capture/index.astro' },
   { name: 'people', role: 'manager', path: () => '/people', file: 'people.astro' },
   { name: 'who did what', role: 'manager', path: () => '/audit', file: 'audit.astro' },
+  ...watchedPages(() => refOf(SCHOOL)),
   { name: 'settings', role: 'manager', path: () => '/settings', file: 'settings.astro' },
   { name: 'figures', role: 'analyst', path: () => '/figures', file: 'figures.astro' },
   {

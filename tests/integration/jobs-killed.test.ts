@@ -133,7 +133,8 @@ describe('a worker that is killed in the middle of its jobs', () => {
         // quarters may be there; until their days are, they count as not done
         const { rows } = await db.owner.query<{ quarter: Date }>('select quarter from rollup_watermark');
         expect(rows[0]?.quarter).toEqual(from);
-        expect(await kept()).toBe(all); // all of a day or none of it
+        // all of a day or none of it: what the dead worker had asked for may yet be done by the database
+        expect([0, all]).toContain(await kept());
       },
     );
     const { rows } = await db.owner.query<{ wh: number }>(

@@ -73,7 +73,7 @@ export async function meetAtOneCase(page: Page, other: Page, address: string): P
   await page.getByRole('button', { name: 'Change', exact: true }).click();
   await page.locator('#what textarea').fill('Half a volt all morning, and a browned half.');
   await other.getByRole('button', { name: 'Change', exact: true }).click();
-  await other.locator('#what input').fill('Second position flat since dawn');
+  await other.getByLabel('Title').fill('Second position flat since dawn');
   await other.getByRole('button', { name: 'Save' }).click();
   await other.getByRole('heading', { level: 1, name: 'Second position flat since dawn' }).waitFor();
   await page.getByRole('button', { name: 'Save' }).click();

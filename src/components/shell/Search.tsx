@@ -79,6 +79,7 @@ export function Search() {
     <form
       action={paths.fleet()}
       role="search"
+      aria-label="Everything"
       className="relative"
       onFocus={() => setOpen(true)}
       onBlur={(event) => {

@@ -26,6 +26,7 @@ export function Developers({ operations, q }: Props) {
     <>
       <form
         role="search"
+        aria-label="Operations"
         className="no-print mb-4 flex flex-wrap items-center gap-x-4 gap-y-2"
         onSubmit={(event) => event.preventDefault()}
       >

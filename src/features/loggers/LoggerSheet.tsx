@@ -107,7 +107,7 @@ export function LoggerSheet({ logger, now, timeZone, mayManage, onNew, onEnd }: 
           },
           {
             key: 'end',
-            label: '',
+            label: 'End',
             numeric: true,
             cell: (t) =>
               mayManage &&
@@ -115,7 +115,7 @@ export function LoggerSheet({ logger, now, timeZone, mayManage, onNew, onEnd }: 
                 <button
                   type="button"
                   className="target px-1 text-petrol hover:underline"
-                  aria-label={`End ${t.name ? `the token ${t.name}` : 'this token'} now`}
+                  aria-label={`End now: ${t.name ? `the token ${t.name}` : 'this token'}`}
                   onClick={() => onEnd(t)}
                 >
                   End now
