@@ -12,7 +12,7 @@ export function usePhone(
   const [phone, setPhone] = useState<CapturePhone | null>(null);
   useEffect(() => {
     const made = new CapturePhone(site, initial);
-    setPhone(made); // eslint-disable-line react-hooks/set-state-in-effect -- the browser's stores exist from here on
+    setPhone(made); // the browser’s stores exist from here on
     return () => made.stop();
   }, [site, initial]);
   const [first] = useState<PhoneState>(() => ({

@@ -82,6 +82,17 @@ export const triedAgain = (report) =>
       .map((t) => `${path.basename(name)} › ${t.fullName}`),
   );
 
+/** The files that took longest by the clock, setting up left out: where time is to be saved. */
+export const slowest = (report, most = 15) =>
+  report.testResults
+    .map(({ name, startTime, endTime }) => ({
+      name: path.relative(root, name),
+      s: (endTime - startTime) / 1000,
+    }))
+    .sort((a, b) => b.s - a.s)
+    .slice(0, most)
+    .map(({ name, s }) => `${s.toFixed(0)} s ${name}`);
+
 async function vitest(projects) {
   const from = elapsedS();
   const report = path.join(fs.mkdtempSync(path.join(os.tmpdir(), 'wakeline-test-')), 'report.json');
@@ -101,6 +112,7 @@ async function vitest(projects) {
       const again = triedAgain(read);
       say(`${again.length} tests passed only when tried again${again.length > 0 ? ':' : ''}`);
       for (const test of again) say(`  ${test}`);
+      for (const line of slowest(read)) say(`  ${line}`);
     } catch {
       say(`Vitest wrote no report (exit ${result.code ?? result.signal})`);
     }
