@@ -75,7 +75,7 @@ describe('the first day of a site', () => {
       .click();
     await roll.waitForURL(/roll-call$/);
     expect(await heading(roll)).toBe('None of 184 units has answered the roll call');
-    expect(await roll.getByRole('complementary', { name: 'Safety caution' }).innerText()).toContain(
+    expect(await roll.getByRole('note', { name: 'Safety caution' }).innerText()).toContain(
       'pass full module voltage',
     );
     loads = 0;

@@ -3,7 +3,8 @@ import type { ReactNode } from 'react';
 /** A safety caution: ink ground and yellow triangle belong to nothing else. */
 export function Caution({ strong, children }: { strong: string; children?: ReactNode }) {
   return (
-    <aside
+    <div
+      role="note"
       aria-label={`Safety caution: ${strong}`}
       className="rounded border border-caution-ground bg-caution-ground px-4 py-3 text-[15px] leading-[22px] text-caution-text"
     >
@@ -27,6 +28,6 @@ export function Caution({ strong, children }: { strong: string; children?: React
         </svg>
         <strong className="font-semibold text-[#fff]">{strong}</strong> {children}
       </p>
-    </aside>
+    </div>
   );
 }
