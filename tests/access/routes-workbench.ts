@@ -32,7 +32,13 @@ export const WORKBENCH: readonly Route[] = [
     permission: 'annotation.write',
     of: 'site',
     path: (t) => `/api/sites/${t.site}/annotations`,
-    body: { ref: NOBODY, string: null, from: '2026-11-03T10:43:00Z', to: null, text: 'Hail' },
+    body: {
+      ref: '00000000-0000-4000-8000-0000000000a1',
+      string: null,
+      from: '2026-11-03T10:43:00Z',
+      to: null,
+      text: 'Hail',
+    },
     served: [200, 201, 409], // the same note once more is that note; of somebody else it clashes
   },
   {

@@ -32,9 +32,8 @@ afterAll(async () => {
   await db.drop();
 });
 beforeEach(async () => {
-  await db.owner.query(
-    'delete from install_check; delete from meter_reading; delete from string_sign_off; delete from attachment',
-  );
+  for (const table of ['install_check', 'meter_reading', 'string_sign_off', 'attachment'])
+    await db.owner.query(`delete from ${table}`);
 });
 
 const count = async (table: string): Promise<number> =>

@@ -7,9 +7,6 @@ import { settled } from './browser';
 const AXE = readFileSync(createRequire(import.meta.url).resolve('axe-core/axe.min.js'), 'utf8');
 const TAGS = ['wcag2a', 'wcag2aa', 'wcag21a', 'wcag21aa', 'wcag22aa', 'best-practice'];
 
-/** Rules whose answer changes with the colours alone. */
-const OF_COLOURS = ['color-contrast', 'link-in-text-block'];
-
 async function faultsBy(page: Page, runOnly: RunOptions['runOnly']): Promise<string[]> {
   const known = await page.evaluate(() => 'axe' in globalThis);
   if (!known) await page.evaluate(AXE); // an element would be refused by the page's policy
@@ -34,10 +31,6 @@ async function faultsBy(page: Page, runOnly: RunOptions['runOnly']): Promise<str
 
 /** What axe finds against WCAG 2.2 AA and its best practices, one line a fault; empty: nothing. */
 export const axeFaults = (page: Page): Promise<string[]> => faultsBy(page, { type: 'tag', values: TAGS });
-
-/** The same of what colours decide, for a page that was looked at whole in its other colours. */
-export const colourFaults = (page: Page): Promise<string[]> =>
-  faultsBy(page, { type: 'rule', values: OF_COLOURS });
 
 /** What is wrong with a page as it stands on a screen `width` px wide: axe's faults, and a page wider than its screen. */
 export async function faultsShown(page: Page, what: string, width: number): Promise<string[]> {
