@@ -1,4 +1,3 @@
-import process from 'node:process';
 import js from '@eslint/js';
 import astro from 'eslint-plugin-astro';
 import reactHooks from 'eslint-plugin-react-hooks';
@@ -38,7 +37,7 @@ export default defineConfig(
       '@typescript-eslint/no-unused-vars': ['error', { argsIgnorePattern: '^_', varsIgnorePattern: '^_' }],
     },
   },
-  ...(process.env.WAKELINE_LINT === 'quick' ? [] : [BY_TYPES]),
+  BY_TYPES,
   {
     files: ['src/{components,features,lib}/**/*.{ts,tsx}'],
     plugins: { 'react-hooks': reactHooks },

@@ -10,6 +10,7 @@ export default defineConfig({
     maxWorkers: 4, // of two cores: journeys mostly wait, for plants and for the server
     sequence: { sequencer: Order },
     restoreMocks: true,
+    expect: { poll: { timeout: 20_000 } }, // by itself a second, which a busy machine misses
     testTimeout: 60_000, // no test is about speed, and machines differ
     hookTimeout: 120_000,
     projects: [
