@@ -77,7 +77,7 @@ export function CauseCard({ cause }: { cause: CausePage }) {
   const time = { now: cause.at, timeZone: cause.timeZone };
   const figures = figuresOf(cause);
   const perDay = lossWords(cause.lossWhDay, cause.lossMoneyDay, cause.currency, ' a day');
-  const soFar = lossWords(cause.lossWh, cause.lossMoney, cause.currency);
+  const upToNow = lossWords(cause.lossWh, cause.lossMoney, cause.currency);
   return (
     <div className="grid items-start gap-5 lg:grid-cols-[minmax(0,3fr)_minmax(0,2fr)]">
       <div className="grid min-w-0 gap-5">
@@ -128,7 +128,7 @@ export function CauseCard({ cause }: { cause: CausePage }) {
           <Units cause={cause} />
         </Sheet>
         <Sheet id="loss" title="What it costs">
-          {perDay || soFar ? (
+          {perDay || upToNow ? (
             <dl className="grid gap-1">
               {perDay && (
                 <div className="flex justify-between gap-4">
@@ -136,17 +136,17 @@ export function CauseCard({ cause }: { cause: CausePage }) {
                   <dd className="font-semibold tabular-nums">{perDay}</dd>
                 </div>
               )}
-              {soFar && (
+              {upToNow && (
                 <div className="flex justify-between gap-4">
                   <dt className="text-ink-2">So far</dt>
-                  <dd className="font-semibold tabular-nums">{soFar}</dd>
+                  <dd className="font-semibold tabular-nums">{upToNow}</dd>
                 </div>
               )}
             </dl>
           ) : (
             <p className="text-ink-2">{cause.hazard ? 'It is no matter of energy.' : 'Not known.'}</p>
           )}
-          {cause.lossMoney === null && (perDay || soFar) && (
+          {cause.lossMoney === null && (perDay || upToNow) && (
             <p className="mt-2 text-sm text-ink-2">
               No money is shown:{' '}
               {cause.currency === null

@@ -31,7 +31,7 @@ export function KindTag({ kind }: Pick<CauseItem, 'kind'>) {
 function Line({ cause, page }: { cause: CauseItem; page: CausesPage }) {
   const time = { now: page.at, timeZone: cause.timeZone };
   const perDay = lossWords(cause.lossWhDay, cause.lossMoneyDay, page.currency, ' a day');
-  const soFar = lossWords(cause.lossWh, cause.lossMoney, page.currency, ' so far');
+  const upToNow = lossWords(cause.lossWh, cause.lossMoney, page.currency, ' so far');
   return (
     <li className="grid gap-x-6 gap-y-1 py-3 lg:grid-cols-[minmax(0,1fr)_210px_190px]">
       <div className="min-w-0">
@@ -78,7 +78,7 @@ function Line({ cause, page }: { cause: CauseItem; page: CausesPage }) {
       </p>
       <p className="text-sm tabular-nums lg:text-right">
         {perDay && <span className="block">{perDay}</span>}
-        {soFar && <span className="block text-ink-2">{soFar}</span>}
+        {upToNow && <span className="block text-ink-2">{upToNow}</span>}
       </p>
     </li>
   );
