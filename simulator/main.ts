@@ -2,6 +2,8 @@ import { parseArgs } from 'node:util';
 import { startSimulator } from './engine';
 import { readScenario } from './scenarios/read';
 import { DEMO_SEED, demoFleet } from './scenarios/demo';
+import { LOAD_USAGE, readLoadOptions } from './load/options';
+import { startLoad } from './load/run';
 import { z } from 'zod';
 
 /**
@@ -11,7 +13,8 @@ import { z } from 'zod';
  */
 const USAGE = `Usage: node --import tsx simulator/main.ts [--scenario FILE] [--pace N]
   --scenario FILE  sites, faults and switches from a scenario file
-  --pace N         units answer a roll call N times faster than in life`;
+  --pace N         units answer a roll call N times faster than in life
+       … simulator/main.ts load --help    many loggers that only make load`;
 
 const environment = z.object({
   WAKELINE_INGEST_URL: z.url({ protocol: /^wss?$/ }).default('ws://127.0.0.1:4321/ingest/v1'),
@@ -21,7 +24,27 @@ const environment = z.object({
   WAKELINE_SIM_STATE: z.string().min(1).optional(),
 });
 
+async function load(args: readonly string[]): Promise<void> {
+  if (args.includes('--help')) {
+    process.stdout.write(`${LOAD_USAGE}\n`);
+    return;
+  }
+  const run = startLoad(readLoadOptions(args, process.env));
+  const stop = () => void run.stop();
+  process.on('SIGINT', stop);
+  process.on('SIGTERM', stop);
+  process.on('disconnect', stop);
+  const figures = await run.done;
+  for (const line of figures.lines()) process.stdout.write(`${line}\n`);
+  for (const [field, { count, reason }] of figures.refusals)
+    process.stderr.write(`${count} refused: ${field} ${reason}\n`);
+}
+
 async function main(): Promise<void> {
+  if (process.argv[2] === 'load') {
+    await load(process.argv.slice(3));
+    return;
+  }
   const { values } = parseArgs({
     options: {
       scenario: { type: 'string' },

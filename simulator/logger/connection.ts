@@ -1,6 +1,16 @@
 import WebSocket from 'ws';
 import { PROTOCOL, serverMessage, type Roster } from '../../src/schemas/ingest';
-import { Outbox } from './outbox';
+import { Outbox, type Numbered } from './outbox';
+
+/** What a connection asks of the reports that it carries: an `Outbox`, or one that has its messages as text. */
+export interface Sending {
+  /** The next messages to send; they count as sent. */
+  take(): (Numbered | string)[];
+  acknowledge(seq: number): void;
+  refuse(seq: number | null, field: string, reason: string, again: boolean): void;
+  /** The connection is gone: what was on the way is sent again. */
+  rewind(): void;
+}
 
 export interface ConnectionOptions {
   url: string;
@@ -11,14 +21,15 @@ export interface ConnectionOptions {
   clock: () => number;
   onRoster: (roster: Roster) => void;
   onListen: (on: boolean) => void;
+  /** Wakeline asks for so many ms without a message. */
+  onWait?: (ms: number) => void;
 }
 
 const FIRST_RETRY_MS = 500;
 const LAST_RETRY_MS = 15_000;
 
 /** A logger's line to Wakeline: one WebSocket at a time, made again when it breaks. */
-export class Connection {
-  readonly outbox = new Outbox();
+export class Connection<Out extends Sending = Outbox> {
   private ws: WebSocket | null = null;
   private retryMs = FIRST_RETRY_MS;
   private timer: NodeJS.Timeout | null = null;
@@ -29,7 +40,10 @@ export class Connection {
   /** Why the last attempt failed, for the plant's page. */
   fault: string | null = null;
 
-  constructor(private readonly options: ConnectionOptions) {}
+  constructor(
+    private readonly options: ConnectionOptions,
+    readonly outbox: Out,
+  ) {}
 
   /** Said hello, and has its roster. */
   get connected(): boolean {
@@ -51,6 +65,18 @@ export class Connection {
     }
   }
 
+  /** Stops and goes on reading what Wakeline says: a slow reader. */
+  deaf(on: boolean): void {
+    if (on) this.ws?.pause();
+    else this.ws?.resume();
+  }
+
+  /** Gone in the middle of a message, without a word; it comes back by itself. */
+  vanish(begun: string): void {
+    if (this.ws?.readyState === WebSocket.OPEN) this.ws.send(begun, { fin: false });
+    this.ws?.terminate();
+  }
+
   stop(): void {
     this.stopped = true;
     if (this.timer) clearTimeout(this.timer);
@@ -69,7 +95,8 @@ export class Connection {
       }, wait);
       return;
     }
-    for (const message of this.outbox.take()) ws.send(JSON.stringify(message));
+    for (const message of this.outbox.take())
+      ws.send(typeof message === 'string' ? message : JSON.stringify(message));
   }
 
   private connect(): void {
@@ -121,6 +148,7 @@ export class Connection {
         break;
       case 'wait':
         this.waitUntilMs = Date.now() + message.ms;
+        this.options.onWait?.(message.ms);
         break;
       case 'listen':
         this.options.onListen(message.on);

@@ -5,6 +5,7 @@ import type { LoggerPlan } from '../plant/plan';
 import type { SitePlant } from '../plant/site-plant';
 import type { StringPlant } from '../plant/string-plant';
 import { Connection, type ConnectionOptions } from './connection';
+import { Outbox } from './outbox';
 import { frameOf, inputRows, inverterRows, radioOf, weatherRows } from './readings';
 import { RollCall } from './roll-call';
 import { Traces } from './traces';
@@ -36,21 +37,24 @@ export class Logger {
   ) {
     this.rollCall = new RollCall(site, plan.serial, options.pace);
     this.traces = new Traces(site, plan.serial);
-    this.connection = new Connection({
-      url: options.url,
-      token: options.token,
-      clock: options.clock,
-      serial: plan.serial,
-      firmware: plan.firmware,
-      onRoster: (roster) => {
-        const first = this.roster === null;
-        this.roster = roster;
-        this.told.clear();
-        this.tellCommands();
-        if (first) this.report(this.site.atS);
+    this.connection = new Connection(
+      {
+        url: options.url,
+        token: options.token,
+        clock: options.clock,
+        serial: plan.serial,
+        firmware: plan.firmware,
+        onRoster: (roster) => {
+          const first = this.roster === null;
+          this.roster = roster;
+          this.told.clear();
+          this.tellCommands();
+          if (first) this.report(this.site.atS);
+        },
+        onListen: (on) => this.rollCall.listen(on, options.clock()),
       },
-      onListen: (on) => this.rollCall.listen(on, options.clock()),
-    });
+      new Outbox(),
+    );
   }
 
   /** Seconds between reports, as Wakeline asks or the plan says. */

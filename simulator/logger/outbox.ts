@@ -1,6 +1,6 @@
 import type { LoggerMessage } from '../../src/schemas/ingest';
 
-type Numbered = Exclude<LoggerMessage, { type: 'hello' }>;
+export type Numbered = Exclude<LoggerMessage, { type: 'hello' }>;
 /** A message before it has its number. */
 export type Unnumbered = Numbered extends infer M ? (M extends Numbered ? Omit<M, 'seq'> : never) : never;
 
