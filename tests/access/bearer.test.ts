@@ -28,6 +28,7 @@ let site: RunningSite;
 let cookie: string;
 const tokens = new Map<string, string>();
 const tests = new Map<string, string>();
+const cases = new Map<string, string>();
 const causes = new Map<string, string>();
 
 const WHO = [
@@ -55,6 +56,12 @@ beforeAll(async () => {
       [fleet.site(name).id, NOW],
     );
     tests.set(name, rows[0]?.ref ?? '');
+    const opened = await db.owner.query<{ ref: string }>(
+      `insert into case_file (organisation_id, site_id, number, title, origin)
+       select organisation_id, id, 900 + id, 'Two units stuck', 'hand' from site where id = $1 returning ref`,
+      [fleet.site(name).id],
+    );
+    cases.set(name, opened.rows[0]?.ref ?? '');
   }
   const manager = await fleet.actor('manager@lowfield.example');
   const analyst = await fleet.actor('analyst@lowfield.example');
@@ -94,7 +101,11 @@ function ask(operation: Operation, who: string, where = GIVEN): Promise<Response
   const values = exampleValues(
     NOW,
     { site: ref, string: [...strings.values()][0]?.ref ?? '' },
-    { cause: { key: causes.get(ref) ?? 'none', siteId: ref }, test: tests.get(where) },
+    {
+      cause: { key: causes.get(ref) ?? 'none', siteId: ref },
+      test: tests.get(where),
+      case: cases.get(where),
+    },
   );
   const { path, body } = exampleRequest(operation, { ...values, ref: randomUUID() });
   const token = tokens.get(who);

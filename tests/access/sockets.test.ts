@@ -1,7 +1,8 @@
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { WebSocket } from 'ws';
 import { ROLES, mayUse, type Permission, type Role } from '../../src/domain/access/permissions';
-import type { LiveMessage } from '../../src/schemas/live';
+import { CLOSE_SIGNED_OUT, type LiveMessage } from '../../src/schemas/live';
+import { newToken, tokenHash } from '../../src/server/auth/secret-link';
 import { loggerToken } from '../../simulator/scenarios/tokens';
 import { testDatabase, type TestDatabase } from '../support/database';
 import { PASSWORD, SECRET, testFleet, type TestFleet } from '../support/fleet';
@@ -24,12 +25,25 @@ let db: TestDatabase;
 let fleet: TestFleet;
 let site: RunningSite;
 const cookies = new Map<Role, string>();
+/** A manager who is deactivated while a page of theirs is open. */
+const LEAVING = 'leaving@lowfield.example';
+let shared = '';
 
 beforeAll(async () => {
   db = await testDatabase();
   fleet = await testFleet(db, [GIVEN, NOT_GIVEN, FOREIGN]);
   site = await startSite(db);
   for (const role of ROLES) cookies.set(role, await signInAt(site.url, `${role}@lowfield.example`, PASSWORD));
+  await db.owner.query(
+    `insert into person (organisation_id, email, name, role, password_hash)
+     select organisation_id, $2, 'Sunniva Quill', role, password_hash from person where email = $1`,
+    ['manager@lowfield.example', LEAVING],
+  );
+  shared = newToken();
+  await db.owner.query(
+    `insert into share_link (site_id, label, token_hash, created_by) select $1, 'Lobby', $2, id from person where email = $3`,
+    [fleet.site(GIVEN).id, tokenHash(shared), 'manager@lowfield.example'],
+  );
 });
 afterAll(async () => {
   await site.stop();
@@ -116,10 +130,24 @@ describe('/live', () => {
     ['nobody', {}, 401],
     ['a cookie of nobody', { cookie: 'wakeline_session=abcdefabcdefabcdefabcdefabcdefabcdefabcd' }, 401],
     ['a logger’s token', { authorization: 'Bearer TOKEN' }, 401],
+    ['a link that shares a site, as a session', { cookie: 'wakeline_session=LINK; wakeline_kept=LINK' }, 401],
+    ['a link that shares a site, as a token', { authorization: 'Bearer LINK' }, 401],
   ])('opens for no one: %s', async (_who, headers, status) => {
     const token = loggerToken(SECRET, fleet.site(GIVEN).plan.loggers[0]?.serial ?? '');
-    const sent = Object.fromEntries(Object.entries(headers).map(([k, v]) => [k, v.replace('TOKEN', token)]));
+    const sent = Object.fromEntries(
+      Object.entries(headers).map(([k, v]) => [k, v.replace('TOKEN', token).replaceAll('LINK', shared)]),
+    );
     expect((await open('/live', { origin: site.url, ...sent })).status).toBe(status);
+  });
+
+  it('ends for whoever is deactivated, and opens no more', async () => {
+    const cookie = await signInAt(site.url, LEAVING, PASSWORD);
+    const socket = await stands(await open('/live', { cookie, origin: site.url }));
+    const closed = new Promise<number>((resolve) => socket.once('close', (code) => resolve(code)));
+    // the row of the session stays: it is the person that no longer counts
+    await db.owner.query('update person set active = false where email = $1', [LEAVING]);
+    expect((await open('/live', { cookie, origin: site.url })).status).toBe(401);
+    expect(await closed).toBe(CLOSE_SIGNED_OUT);
   });
 
   it('opens for no page of another site, whoever is signed in', async () => {

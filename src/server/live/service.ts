@@ -44,7 +44,7 @@ export class LiveHub {
   private everything = false;
   private stopping = false;
   private readonly listener = new Listener(
-    [CHANNELS.changed, CHANNELS.rollCall, CHANNELS.asBuilt, CHANNELS.noticed],
+    [CHANNELS.changed, CHANNELS.rollCall, CHANNELS.asBuilt, CHANNELS.noticed, CHANNELS.access],
     (channel, payload) => this.notice(channel, payload),
     () => {
       this.everything = true;
@@ -107,8 +107,18 @@ export class LiveHub {
     return this.connections.size;
   }
 
+  /** Whether changes are heard of. */
+  get hears(): boolean {
+    return this.listener.listening;
+  }
+
   private notice(channel: string, payload: string): void {
     if (this.connections.size === 0) return;
+    if (channel === CHANNELS.access) {
+      const person = Number(payload);
+      void this.checkSessions((c) => c.actor.personId === person);
+      return;
+    }
     if (channel === CHANNELS.noticed) {
       for (const id of readNoticed(payload)) this.persons.add(id);
       this.notices.soon();
@@ -235,8 +245,8 @@ export class LiveHub {
   }
 
   /** Asks again who everybody is; ends the connections of those who are nobody any more. */
-  async checkSessions(): Promise<void> {
-    for (const connection of [...this.connections]) {
+  async checkSessions(whose: (connection: Connection) => boolean = () => true): Promise<void> {
+    for (const connection of [...this.connections].filter(whose)) {
       try {
         const found = await actorOfCookie(connection.cookie);
         if (!found) {

@@ -22,6 +22,8 @@ export const CHANNELS = {
   written: 'written',
   /** [person id]: their notices have changed. */
   noticed: 'noticed',
+  /** Person id: a session of theirs ended, or what they may see has changed (by triggers). */
+  access: 'access',
   /** A webhook is to be called now. */
   called: 'called',
 } as const;

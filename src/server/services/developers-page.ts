@@ -1,6 +1,7 @@
 import { randomUUID } from 'node:crypto';
 import type { OperationShown } from '../../schemas/api/developers';
 import type { Tx } from '../db/transaction';
+import { casesFrom } from '../queries/v1-cases';
 import { exampleOfPlant } from '../queries/v1-plant';
 import { shutdownTestsFrom } from '../queries/v1-history';
 import { exampleValues } from '../v1/curl';
@@ -12,5 +13,7 @@ export async function developersPage(tx: Tx, origin: string, at: Date): Promise<
   const plant = await exampleOfPlant(tx);
   const [test] = await shutdownTestsFrom(tx, {}, null, 1);
   const [cause] = await causesNow(tx, at);
-  return operationsShown(origin, exampleValues(at, plant, { cause, test: test?.id }), randomUUID);
+  const [opened] = await casesFrom(tx, {}, null, 1);
+  const others = { cause, test: test?.id, case: opened?.id };
+  return operationsShown(origin, exampleValues(at, plant, others), randomUUID);
 }

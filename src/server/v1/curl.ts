@@ -11,6 +11,7 @@ export interface ExampleValues {
   cause: string;
   causeSite: string;
   test: string;
+  case: string;
   ref: string;
   from: string;
   to: string;
@@ -25,7 +26,11 @@ const NONE = '00000000-0000-4000-8000-000000000000';
 export function exampleValues(
   at: Date,
   plant: { site: string; string: string } | undefined,
-  others: { cause?: { key: string; siteId: string } | undefined; test?: string | undefined } = {},
+  others: {
+    cause?: { key: string; siteId: string } | undefined;
+    test?: string | undefined;
+    case?: string | undefined;
+  } = {},
 ): Omit<ExampleValues, 'ref'> {
   const dayOf = (days: number) => new Date(at.getTime() - days * 86_400_000).toISOString().slice(0, 10);
   return {
@@ -34,6 +39,7 @@ export function exampleValues(
     cause: others.cause?.key ?? 'KEY OF A CAUSE',
     causeSite: others.cause?.siteId ?? plant?.site ?? NONE,
     test: others.test ?? NONE,
+    case: others.case ?? NONE,
     from: `${dayOf(1)}T11:00:00Z`,
     to: `${dayOf(1)}T12:00:00Z`,
     fromDay: dayOf(8),

@@ -1,4 +1,5 @@
 import { paths } from '../../schemas/paths';
+import { listCases, listNotes, pinNote, readCase } from './cases';
 import { listEvents, listRollCalls, listShutdownTests, readShutdownTest } from './history';
 import type { Operation } from './operation';
 import { listLoggers, listPlacements, listSites, listStrings, readMe, readSite, readString } from './plant';
@@ -21,6 +22,9 @@ export const OPERATIONS: readonly Operation[] = [
   listRollCalls,
   listShutdownTests,
   readShutdownTest,
+  listCases,
+  readCase,
+  listNotes,
   listLoggers,
   streamFrames,
   streamQuarters,
@@ -28,6 +32,7 @@ export const OPERATIONS: readonly Operation[] = [
   acknowledgeHazard,
   recordMeterReading,
   openCaseFile,
+  pinNote,
 ];
 
 const ROOT = paths.api.v1('');
