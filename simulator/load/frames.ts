@@ -30,6 +30,8 @@ export interface LoadString {
 const VARIANTS = 16;
 const DAY_S = 86_400;
 const BIN_S = 900;
+/** Texts of frames kept for one string, or for all that look alike: some hours of catching up. */
+const KEPT_TEXTS = 1024;
 /** A shutdown by the initiator: ten minutes of every two hours, seconds. */
 const SHUTDOWN_EVERY_S = 7200;
 export const SHUTDOWN_S = 600;
@@ -46,7 +48,18 @@ export function loadString(
   const key = mix(shape.seed, keyOf(`${logger}/${index}`));
   const draw = uniform(key, 1);
   const kind = draw < shape.silent ? 'silent' : draw < shape.silent + shape.stuck ? 'stuck' : 'plain';
-  return { key, kind, present, made: new Map() };
+  return { key, kind, present, made: kind === 'plain' ? soundLooks(shape, present) : new Map() };
+}
+
+/** Sound strings with the same seats taken look alike but for their variant: their texts are kept once for all. */
+const looks = new WeakMap<LoadShape, Map<string, Map<number, string>>>();
+function soundLooks(shape: LoadShape, present: readonly boolean[]): Map<number, string> {
+  const ofShape = looks.get(shape) ?? new Map<string, Map<number, string>>();
+  looks.set(shape, ofShape);
+  const seats = present.map((p) => (p ? 1 : 0)).join('');
+  const made = ofShape.get(seats) ?? new Map<number, string>();
+  ofShape.set(seats, made);
+  return made;
 }
 
 /** Since when the logger's initiator is in force at an instant, epoch s; null: released. */
@@ -106,6 +119,7 @@ export function frameText(shape: LoadShape, s: LoadString, atS: number, down: bo
   let text = s.made.get(which);
   if (text === undefined) {
     text = JSON.stringify(frameAt(shape, s, atS, down));
+    if (s.made.size >= KEPT_TEXTS) s.made.clear();
     s.made.set(which, text);
   }
   return text;
