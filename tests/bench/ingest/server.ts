@@ -2,6 +2,7 @@ import { fork, type ChildProcess } from 'node:child_process';
 
 export interface Served {
   port: number;
+  pid: number;
   stop(): Promise<void>;
 }
 
@@ -19,6 +20,7 @@ export async function serve(port: number, roles: string): Promise<Served> {
   });
   return {
     port,
+    pid: child.pid ?? 0,
     stop: () =>
       new Promise((resolve) => {
         child.once('exit', () => resolve());
