@@ -50,6 +50,12 @@ const settings = z.object({
   LOCAL_MAIL_FOLDER: z.string().optional(),
   /** The plant's switches, where a simulator runs beside the demo; only named on the demo's pages. */
   SIMULATOR_URL: z.url().optional(),
+  /** Raw readings are kept for so many days, whole UTC days at a time. */
+  RAW_KEPT_DAYS: z.coerce.number().int().min(7).max(3660).default(90),
+  /** A day's frames are packed once it is older than so many days. */
+  PACKED_AFTER_DAYS: z.coerce.number().int().min(1).max(3660).default(3),
+  /** Sums of quarters of an hour are kept for so many days; sums of days for ever. */
+  QUARTERS_KEPT_DAYS: z.coerce.number().int().min(90).max(36_600).default(731),
   /** Seconds from a unit's first report of the day (or its release) until shutdown without a command counts as stuck. */
   STUCK_GRACE_S: z.coerce.number().int().min(0).max(3600).optional(),
 });

@@ -1,6 +1,7 @@
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import type { SeededSite } from '../../seeds/plant/seeded';
-import { keepDays, mergeLateFrames } from '../../src/server/jobs/keep-days';
+import { keepDays } from '../../src/server/jobs/keep-days';
+import { mergeLateFrames } from '../../src/server/jobs/late-frames';
 import { rollUpClosed, rollUpDirty } from '../../src/server/jobs/roll-up';
 import { startWorker, stopWorker } from '../../src/server/jobs/worker';
 import { closePools, connect } from '../../src/server/db/pools';

@@ -7,10 +7,10 @@ import {
   MESSAGE_MAX_BYTES,
   type LoggerMessage,
 } from '../../schemas/ingest';
+import { config } from '../config';
 import { inputKey, type FrameRow, type RosterView } from '../queries/ingest-rows';
 import type { Work } from './batch';
 import { checkFrame, isFault, type Fault } from './check';
-import { RAW_KEPT_DAYS } from './write-batch';
 
 /** From bytes to rows: each step gives what it read, or the fault with its field named. */
 
@@ -94,10 +94,10 @@ function badTime(at: number, nowS: number): string | null {
     return `is ${at - nowS} s ahead of the server's clock; set the logger's clock`;
   return null;
 }
-const tooOld = (at: number, nowS: number): string | null =>
-  at < nowS - RAW_KEPT_DAYS * 86_400
-    ? `is older than the ${RAW_KEPT_DAYS} days that readings are kept`
-    : null;
+function tooOld(at: number, nowS: number): string | null {
+  const days = config().RAW_KEPT_DAYS;
+  return at < nowS - days * 86_400 ? `is older than the ${days} days that readings are kept` : null;
+}
 
 function heardBy(rows: readonly FrameRow[]): Map<number, number> {
   const gateways = new Map<number, number>();

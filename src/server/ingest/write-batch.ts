@@ -1,4 +1,5 @@
 import type pg from 'pg';
+import { config } from '../config';
 import { ensureDays, parkFrames, partitionDays, writeFrames } from '../queries/ingest-frames';
 import { writeHeard } from '../queries/ingest-heard';
 import {
@@ -11,8 +12,6 @@ import {
 } from '../queries/ingest-reports';
 import type { Batch } from './batch';
 
-/** Raw readings are kept for so many days; older ones have no place among them. */
-export const RAW_KEPT_DAYS = 90;
 /** Quarters that closed this long ago may have been rolled up: the job rolls up after 120 s. */
 export const ROLLED_UP_AFTER_S = 90;
 const DAY_S = 86_400;
@@ -20,28 +19,38 @@ const DAY_S = 86_400;
 const dayOf = (epochS: number): string =>
   new Date(epochS * 1000).toISOString().slice(0, 10).replaceAll('-', '');
 
-/** The days that have partitions, as far as this connection knows. */
+/** The days that take frames and those that take other reports, as far as this connection knows. */
 export class Days {
-  private known = new Set<string>();
+  private frames: ReadonlySet<string> = new Set();
+  private reports: ReadonlySet<string> = new Set();
 
   /** Makes today's neighbours where the job has not yet, and learns which days there are. */
   async refresh(client: pg.ClientBase, nowS: number): Promise<void> {
     await ensureDays(client, new Date((nowS - DAY_S) * 1000), new Date((nowS + DAY_S) * 1000));
-    this.known = await partitionDays(client);
+    await this.learn(client);
   }
 
-  has(epochS: number): boolean {
-    return this.known.has(dayOf(epochS));
+  private async learn(client: pg.ClientBase): Promise<void> {
+    ({ frames: this.frames, reports: this.reports } = await partitionDays(client));
   }
 
-  /** Makes the partitions of these times where they lie within what is kept. */
+  /** False for a day that is packed, or has no partition. */
+  takesFrames(epochS: number): boolean {
+    return this.frames.has(dayOf(epochS));
+  }
+
+  takesReports(epochS: number): boolean {
+    return this.reports.has(dayOf(epochS));
+  }
+
+  /** Makes the partitions of these reports' times where they lie within what is kept. */
   async ensure(client: pg.ClientBase, times: readonly number[], nowS: number): Promise<void> {
     const missing = new Map<string, number>();
-    for (const at of times) if (!this.has(at)) missing.set(dayOf(at), at);
+    for (const at of times) if (!this.takesReports(at)) missing.set(dayOf(at), at);
     for (const at of missing.values())
-      if (at > nowS - RAW_KEPT_DAYS * DAY_S)
+      if (at > nowS - config().RAW_KEPT_DAYS * DAY_S)
         await ensureDays(client, new Date(at * 1000), new Date(at * 1000));
-    if (missing.size > 0) this.known = await partitionDays(client);
+    if (missing.size > 0) await this.learn(client);
   }
 }
 
@@ -92,18 +101,19 @@ export async function writeBatch(
   if (gateways.length > 0) await learnGateways(client, gateways);
   gatewaysHeard.told(gateways);
   if (batch.frames.length > 0) {
-    const present = batch.frames.filter((f) => days.has(f.at));
+    const present = batch.frames.filter((f) => days.takesFrames(f.at));
     if (present.length < batch.frames.length)
       await parkFrames(
         client,
-        batch.frames.filter((f) => !days.has(f.at)),
+        batch.frames.filter((f) => !days.takesFrames(f.at)),
       );
     if (present.length > 0) await writeFrames(client, present, new Date((nowS - ROLLED_UP_AFTER_S) * 1000));
     for (const f of present) written.strings.add(f.stringId);
   }
   const times = [...inputs, ...inverters, ...weather].map((r) => r.at);
   if (times.length > 0) await days.ensure(client, times, nowS);
-  const kept = <T extends { at: number }>(rows: readonly T[]): T[] => rows.filter((r) => days.has(r.at));
+  const kept = <T extends { at: number }>(rows: readonly T[]): T[] =>
+    rows.filter((r) => days.takesReports(r.at));
   if (inputs.length > 0) await writeInputs(client, kept(inputs));
   if (inverters.length > 0)
     for (const site of await writeInverters(client, kept(inverters))) written.sites.add(site);

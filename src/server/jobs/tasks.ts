@@ -7,9 +7,11 @@ import { writeRoofLetters } from '../services/roof-letters';
 import { sendCalls } from '../services/webhook-send';
 import { checkClosedCases } from '../services/check-closed-cases';
 import { judgeAllCauses, judgeSiteCauses } from './judge-causes';
-import { keepDays, mergeLateFrames } from './keep-days';
+import { keepDays } from './keep-days';
+import { mergeLateFrames } from './late-frames';
 import { nightsDue } from './nights-due';
 import { judgeNight } from './output-night';
+import { packDays } from './pack-days';
 import { recorded, type Done } from './recorded';
 import { rollUpClosed, rollUpDirty } from './roll-up';
 import { tell, tellGathered } from './tell';
@@ -125,6 +127,12 @@ const kinds = {
       const runs = await forgetRunsBefore(database('ingest'), new Date(now.getTime() - RUNS_KEPT_MS));
       return { dropped, runs };
     },
+  },
+  pack_days: {
+    title: 'Pack the readings of days that are some days old',
+    cron: '23 0 * * *',
+    queue: 'keep_days',
+    run: () => packDays(new Date()),
   },
 } satisfies Record<string, JobKind>;
 

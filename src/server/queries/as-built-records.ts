@@ -96,7 +96,11 @@ const HANGING: Record<
       ),
       count('trace of a command', 'select 1 from trace where string_id = ?'),
       count('event', 'select 1 from event where string_id = ?'),
-      count('reported reading', 'select 1 from string_frame where string_id = ? limit 1'),
+      count(
+        'reported reading',
+        `select 1 from string s where s.id = ? and (exists (select from string_frame f where f.string_id = s.id)
+           or exists (select from packed_frame p where p.string_id = s.id))`,
+      ),
       count('day of production', 'select 1 from string_day where string_id = ?'),
     ],
   },

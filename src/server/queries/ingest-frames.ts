@@ -91,7 +91,10 @@ export function maskOf(state: readonly (number | null)[]): string {
 }
 
 /** cV and dW over the units of a frame, as the database's frame_voltage and frame_power reckon them. */
-export function sumsOf(row: FrameRow): { voltage: number; power: number } {
+export function sumsOf(row: Pick<FrameRow, 'voltage' | 'voltageIn' | 'current' | 'power' | 'state'>): {
+  voltage: number;
+  power: number;
+} {
   let voltage = 0;
   let scaled = 0;
   const { voltageIn, power } = row;
@@ -158,13 +161,18 @@ export async function parkFrames(client: pg.ClientBase, rows: readonly FrameRow[
   );
 }
 
-/** The UTC days (YYYYMMDD) that have a partition of string_frame. */
-export async function partitionDays(client: pg.ClientBase): Promise<Set<string>> {
-  const { rows } = await client.query<{ day: string }>(
-    `select right(c.relname, 8) as day from pg_inherits i join pg_class c on c.oid = i.inhrelid
-     where i.inhparent = 'string_frame'::regclass`,
+/** The UTC days (YYYYMMDD) that take frames, a day that is being packed does not, and those that take other reports. */
+export async function partitionDays(
+  client: pg.ClientBase,
+): Promise<{ frames: Set<string>; reports: Set<string> }> {
+  const { rows } = await client.query<{ day: string; frames: boolean }>(
+    `select right(c.relname, 8) as day, i.inhparent = 'string_frame'::regclass as frames
+     from pg_inherits i join pg_class c on c.oid = i.inhrelid
+     where i.inhparent = 'input_frame'::regclass
+       or (i.inhparent = 'string_frame'::regclass and to_regclass('packed_frame_' || right(c.relname, 8)) is null)`,
   );
-  return new Set(rows.map((r) => r.day));
+  const days = (frames: boolean) => new Set(rows.filter((r) => r.frames === frames).map((r) => r.day));
+  return { frames: days(true), reports: days(false) };
 }
 
 export async function ensureDays(client: pg.ClientBase, from: Date, to: Date): Promise<void> {

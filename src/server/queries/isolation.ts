@@ -1,5 +1,6 @@
 import type { IsolationFinding, WatchedInput, WatchedUnit } from '../../domain/commissioning/isolation-watch';
 import type { Tx } from '../db/transaction';
+import { after, anyString, framesOf } from './frames';
 
 /** Watches for the isolation of one string. Whoever calls has checked that the actor may see the site. */
 
@@ -109,8 +110,9 @@ export async function watchedCurrents(
   const { rows: frames } = await tx.raw<{
     rows: { stringId: number; at: number; current: (number | null)[] }[];
   }>(
-    `select string_id as "stringId", extract(epoch from at)::float8 as at, current from string_frame
-     where string_id = any (:ids::int4[]) and at >= :from and at <= :to order by at`,
+    `select string_id as "stringId", extract(epoch from f.at)::float8 as at, current
+     from ${framesOf({ columns: ['current'], strings: anyString, from: ':from::timestamptz', to: after(':to') })} f
+     order by f.at`,
     { ids: seats.map((s) => s.stringId), from: span.from, to: span.to },
   );
   const byString = new Map(seats.map((s) => [s.stringId, [] as typeof frames]));

@@ -1,4 +1,6 @@
 import type { Knex } from 'knex';
+import { config } from '../config';
+import { oneString, packedFrames } from './frames';
 import type pg from 'pg';
 import type { StringMemory, UnitCounts } from '../../domain/verdicts/memory';
 import type { EventKind } from '../../domain/verdicts/codes';
@@ -35,6 +37,48 @@ export interface StoredFrame {
 
 /** Frames that are later than each string's instant (epoch s), oldest first, at most `limit` a string. */
 export async function framesAfter(
+  db: Knex,
+  after: readonly { stringId: number; atS: number }[],
+  limit: number,
+): Promise<StoredFrame[]> {
+  const single = await singleAfter(db, after, limit);
+  // a string's first judgement, or the first after days without any: some of its frames may be packed by now
+  const packedBeforeS = Date.now() / 1000 - config().PACKED_AFTER_DAYS * 86_400;
+  const behind = after.filter((a) => a.atS < packedBeforeS);
+  if (behind.length === 0) return single;
+  const packed = await packedAfter(db, behind, limit);
+  if (packed.length === 0) return single;
+  const taken = new Map<number, number>();
+  return [...packed, ...single]
+    .sort((a, b) => a.at - b.at)
+    .filter(({ stringId }) => {
+      const n = taken.get(stringId) ?? 0;
+      taken.set(stringId, n + 1);
+      return n < limit;
+    });
+}
+
+async function packedAfter(
+  db: Knex,
+  after: readonly { stringId: number; atS: number }[],
+  limit: number,
+): Promise<StoredFrame[]> {
+  // by day first: the days after those that are enough need not be unpacked
+  const frames = packedFrames({
+    columns: ['voltage', 'voltage_in', 'state'],
+    strings: oneString('s.id'),
+    from: `(to_timestamp(s.after) + interval '1 microsecond')`,
+    to: `'infinity'::timestamptz`,
+  });
+  const { rows } = await db.raw<{ rows: StoredFrame[] }>(
+    `select s.id as "stringId", extract(epoch from f.at)::int4 as at, f.voltage, f.voltage_in as "voltageIn", f.state
+     from unnest(?::int4[], ?::int4[]) s(id, after) cross join lateral (${frames} order by p.day, x.at limit ?) f`,
+    [after.map((a) => a.stringId), after.map((a) => a.atS), limit],
+  );
+  return rows;
+}
+
+async function singleAfter(
   db: Knex,
   after: readonly { stringId: number; atS: number }[],
   limit: number,

@@ -1,4 +1,5 @@
 import type { Tx } from '../db/transaction';
+import { anyString, framesOf, oneString, packedFrames, singleFrames, SPAN } from './frames';
 
 /** Currents of a site's units over time. Whoever calls has checked that the actor may see the site. */
 
@@ -42,13 +43,15 @@ export async function unitCurrents(
      from (select distinct on (f.string_id, f.step) f.string_id, f.step, f.current
            from (select string_id, at, current,
                         extract(epoch from date_bin(make_interval(secs => :stepS), at, timestamptz '2000-01-01 00:00Z'))::int8::float8 as step
-                 from string_frame where string_id = any (:ids::int4[]) and at >= :from and at < :to) f
+                 from ${framesOf({ columns: ['current'], strings: anyString, ...SPAN })} r) f
            order by f.string_id, f.step, f.at desc) f
      order by f.step, f.string_id`,
     { ids: strings.map((s) => s.id), from: window.from, to: window.to, stepS: window.stepS },
   );
   return { strings, frames };
 }
+
+const OF_STRING = { columns: [], strings: oneString('s.id'), ...SPAN };
 
 /** When the site's strings first reported within a window; null: not at all. */
 export async function firstReport(
@@ -58,8 +61,8 @@ export async function firstReport(
 ): Promise<Date | null> {
   const { rows } = await tx.raw<{ rows: { at: Date | null }[] }>(
     `select min(first.at) as at from string s
-     cross join lateral (select min(f.at) as at from string_frame f
-       where f.string_id = s.id and f.at >= :from and f.at < :to) first
+     cross join lateral (select min(f.at) as at from (${singleFrames(OF_STRING)}) f
+       union all select min(f.at) from (${packedFrames(OF_STRING)}) f) first
      where s.site_id = :siteId and s.kind <> 'shutdown_only'`,
     { siteId, ...window },
   );

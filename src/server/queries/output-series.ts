@@ -1,5 +1,6 @@
 import type { UnitType } from '../../domain/equipment/unit-type';
 import type { Tx } from '../db/transaction';
+import { anyString, framesOf, SPAN } from './frames';
 
 /** What the night's judgements read of a site. Instants are epoch seconds; spans include `from` and exclude `to`. */
 
@@ -89,8 +90,8 @@ export async function quartersIn(
   const { rows } = await tx.raw<{ rows: { atS: number; stringId: number; voltage: (number | null)[] }[] }>(
     `select extract(epoch from at)::float8 as "atS", string_id as "stringId", array_agg(v::float8 order by o) as voltage
      from (select date_bin('15 min', f.at, '2000-01-01Z') as at, f.string_id, u.o, avg(u.v) as v
-           from string_frame f cross join lateral unnest(f.voltage_in) with ordinality u(v, o)
-           where f.string_id = any (:ids::int4[]) and f.at >= :from and f.at < :to group by 1, 2, 3) q
+           from ${framesOf({ columns: ['voltage_in'], strings: anyString, ...SPAN })} f
+             cross join lateral unnest(f.voltage_in) with ordinality u(v, o) group by 1, 2, 3) q
      group by at, string_id`,
     { ids: [...stringIds], ...span },
   );
@@ -242,7 +243,8 @@ export async function loopRows(
     `select f.string_id as "stringId", extract(epoch from f.at)::float8 as "atS", f.voltage, f.current,
             n.voltage as "inputVoltage", n.current as "inputCurrent"
      from (select distinct on (string_id, date_bin('5 min', at, '2000-01-01Z')) string_id, at, voltage, current
-           from string_frame where string_id = any (:ids::int4[]) and at >= :from and at < :to and power_sum > 0
+           from ${framesOf({ columns: ['power_sum', 'voltage', 'current'], strings: anyString, ...SPAN })} r
+           where power_sum > 0
            order by string_id, date_bin('5 min', at, '2000-01-01Z'), at) f
      join string s on s.id = f.string_id
      cross join lateral (

@@ -1,4 +1,6 @@
 import type { Knex } from 'knex';
+import type pg from 'pg';
+import { framesOf } from './frames';
 
 /**
  * Roll-ups by SQL: quarters of an hour from frames, a site's local days from quarters. Every statement replaces what
@@ -32,6 +34,13 @@ export async function allSites(db: Knex): Promise<number[]> {
   return rows.map((r) => r.id);
 }
 
+const QUARTER_FRAMES = framesOf({
+  columns: ['voltage_sum', 'power_sum', 'voltage', 'voltage_in', 'current', 'power', 'temperature', 'state'],
+  strings: (id) => `${id} = s.id`,
+  from: ':from::timestamptz',
+  to: `(:from::timestamptz + interval '15 min')`,
+});
+
 /**
  * A quarter of strings from their frames. A frame stands for one report interval; frames that came between, because
  * a state changed, add no time: minutes are capped by the quarter. A unit's own power where it reports one, else
@@ -47,7 +56,7 @@ export async function rollStringQuarter(
     `with f as materialized (
        select f.*, site.report_interval_s / 60.0 as minutes
        from string s join site on site.id = s.site_id
-         join string_frame f on f.string_id = s.id and f.at >= :from and f.at < :from::timestamptz + interval '15 min'
+         cross join lateral ${QUARTER_FRAMES} f
        where ${chosen}),
      whole as (
        select string_id, count(*) as frames, avg(voltage_sum) as v, min(voltage_sum) as v_min, max(voltage_sum) as v_max,
@@ -232,11 +241,17 @@ export interface LateFrame {
   frame: unknown;
 }
 
-/** Parked frames that are young enough to be kept, oldest arrival first. */
-export async function lateFrames(db: Knex, after: Date, limit: number): Promise<LateFrame[]> {
+/** Parked frames that are young enough to be kept and whose day (yyyy-mm-dd, UTC) is none of these, oldest arrival first. */
+export async function lateFrames(
+  db: Knex,
+  after: Date,
+  closedDays: readonly string[],
+  limit: number,
+): Promise<LateFrame[]> {
   const { rows } = await db.raw<{ rows: LateFrame[] }>(
-    `select l.id, l.at, l.frame from late_frame l join string s on s.id = l.string_id where l.at >= ? order by l.id limit ?`,
-    [after.toISOString(), limit],
+    `select l.id, l.at, l.frame from late_frame l join string s on s.id = l.string_id
+     where l.at >= ? and (l.at at time zone 'UTC')::date <> all (?::date[]) order by l.id limit ?`,
+    [after.toISOString(), [...closedDays], limit],
   );
   return rows;
 }
@@ -245,10 +260,37 @@ export async function dropLateFrames(db: Knex, ids: readonly number[]): Promise<
   await db.raw('delete from late_frame where id = any (?::int8[])', [[...ids]]);
 }
 
-/** Gives up raw readings before this UTC day; gives the number of partitions dropped. */
+/** The same on the connection of whoever merged them. */
+export async function forgetLateFrames(client: pg.ClientBase, ids: readonly number[]): Promise<void> {
+  await client.query('delete from late_frame where id = any ($1::int8[])', [[...ids]]);
+}
+
+/** Quarters of these instants are to be rolled up again. */
+export async function markDirty(
+  client: pg.ClientBase,
+  frames: readonly { at: Date; stringId: number }[],
+): Promise<void> {
+  await client.query(
+    `insert into rollup_dirty (quarter, string_id)
+     select distinct date_bin('15 min', at, '2000-01-01Z'), string_id from unnest($1::timestamptz[], $2::int4[]) x(at, string_id)
+     order by 1, 2 on conflict do nothing`,
+    [frames.map((f) => f.at), frames.map((f) => f.stringId)],
+  );
+}
+
+/** Gives up raw readings, packed or not, before this UTC day; gives the number of partitions dropped. */
 export async function dropDaysBefore(db: Knex, day: Date): Promise<number> {
   const { rows } = await db.raw<{ rows: { dropped: number }[] }>(
     'select drop_days_before(?::date) as dropped',
+    [day.toISOString().slice(0, 10)],
+  );
+  return rows[0]?.dropped ?? 0;
+}
+
+/** Gives up quarters of an hour before this UTC day; days stay. Gives the number of partitions dropped. */
+export async function dropQuartersBefore(db: Knex, day: Date): Promise<number> {
+  const { rows } = await db.raw<{ rows: { dropped: number }[] }>(
+    'select drop_quarters_before(?::date) as dropped',
     [day.toISOString().slice(0, 10)],
   );
   return rows[0]?.dropped ?? 0;

@@ -4,6 +4,7 @@ import type { InForce } from '../../domain/verdicts/codes';
 import type { UnitKind, UnitType } from '../../domain/equipment/unit-type';
 import type { EvidenceTrace, TestedPart, TestFacts } from '../../domain/commissioning/shutdown-test-record';
 import type { Tx } from '../db/transaction';
+import { after, anyString, framesOf } from './frames';
 
 /** The plant as a shutdown test sees it, and what loggers reported in the minutes of a test. */
 
@@ -177,7 +178,12 @@ export async function framesIn(tx: Tx, stringIds: readonly number[], span: Span)
   const { rows } = await tx.raw<{ rows: FrameRow[] }>(
     `select string_id as "stringId", extract(epoch from at)::float8 as "atS", state, voltage as "voltageOut",
             voltage_in as "voltageIn"
-     from string_frame where string_id = any (cast(:ids as int4[])) and at between :from and :to order by at`,
+     from ${framesOf({
+       columns: ['state', 'voltage', 'voltage_in'],
+       strings: anyString,
+       from: ':from::timestamptz',
+       to: after(':to'),
+     })} f order by at`,
     { ids: [...stringIds], ...span },
   );
   return rows;

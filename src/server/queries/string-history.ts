@@ -1,6 +1,7 @@
 import type { EventItem } from '../../schemas/api/now';
 import type { InForce } from '../../domain/verdicts/codes';
 import type { Tx } from '../db/transaction';
+import { anyString, framesOf, oneString, SPAN, type FrameColumn } from './frames';
 
 /** Readings of one string over time, and what they are compared with. Instants in epoch seconds; V, A, W. */
 export interface HistoryPoint {
@@ -22,6 +23,11 @@ const OF_FRAME: Record<Quantity, string> = {
   voltage: 'voltage_sum / 100.0',
   power: 'power_sum / 10.0',
   current: '(select percentile_cont(0.5) within group (order by c) from unnest(current) c) / 1000.0',
+};
+const FRAME_COLUMNS: Record<Quantity, readonly FrameColumn[]> = {
+  voltage: ['voltage_sum', 'power_sum'],
+  power: ['voltage_sum', 'power_sum'],
+  current: ['voltage_sum', 'power_sum', 'current'],
 };
 const OF_QUARTER: Record<Quantity, { value: string; low: string; high: string }> = {
   voltage: { value: 'voltage_avg / 100.0', low: 'voltage_min / 100.0', high: 'voltage_max / 100.0' },
@@ -46,7 +52,7 @@ export async function stringMinutes(
             avg(power_sum)::float8 / 10 * :stepS / 3600 as energy
      from (select date_bin(make_interval(secs => :stepS), at, timestamptz '2000-01-01 00:00Z') as step,
                   ${OF_FRAME[quantity]} as v, power_sum
-           from string_frame where string_id = :stringId and at >= :from and at < :to) f
+           from ${framesOf({ columns: FRAME_COLUMNS[quantity], strings: oneString(':stringId'), ...SPAN })} r) f
      where v is not null group by step order by step`,
     { stringId, stepS, ...window },
   );
@@ -134,7 +140,7 @@ const sourceOf = ({ resolution, quantity }: SiblingOptions): string =>
   ({
     minute: `select string_id, date_bin(make_interval(secs => :stepS), at, timestamptz '2000-01-01 00:00Z') as step,
                     voltage_sum as voltage, ${OF_FRAME[quantity]} as v
-             from string_frame where string_id = any (:ids) and at >= :from and at < :to`,
+             from ${framesOf({ columns: FRAME_COLUMNS[quantity], strings: anyString, ...SPAN })} r`,
     quarter: `select string_id, at as step, voltage_avg as voltage, ${OF_QUARTER[quantity].value} as v
               from string_quarter where string_id = any (:ids) and at >= :from and at < :to`,
     day: `select string_id, (day + time '12:00') at time zone :timeZone as step, voltage_avg as voltage,
@@ -247,7 +253,7 @@ export async function energyAgainst(
        select string_id, power_sum,
               extract(epoch from least(coalesce(lead(at) over (partition by string_id order by at), :to::timestamptz) - at, interval '5 minutes'))
                 ::float8 as seconds
-       from string_frame where string_id = any (:ids) and at >= :from and at < :to)
+       from ${framesOf({ columns: ['power_sum'], strings: anyString, ...SPAN })} r)
      select string_id as "stringId", coalesce(sum(power_sum / 10.0 * seconds / 3600), 0)::float8 as wh,
             count(*)::int as reports
      from spaced group by string_id`,

@@ -1,4 +1,5 @@
 import type { Tx } from '../db/transaction';
+import { after, framesOf, oneString, SPAN, type FrameColumn } from './frames';
 import type { Window } from './string-history';
 
 /** Single units of a string over time, and which unit sat where. Instants in epoch seconds. */
@@ -16,6 +17,15 @@ const UNIT_COLUMNS = {
   ],
 } as const;
 export type UnitColumn = keyof typeof UNIT_COLUMNS;
+const MADE_OF: Record<UnitColumn, readonly FrameColumn[]> = {
+  voltage: ['voltage'],
+  voltageIn: ['voltage_in'],
+  current: ['current'],
+  temperature: ['temperature'],
+  power: ['power', 'voltage', 'current'],
+};
+const reportsOf = (column: UnitColumn): string =>
+  framesOf({ columns: MADE_OF[column], strings: oneString(':stringId'), ...SPAN });
 
 /** One quantity of every unit, report by report; arrays in slot order. */
 export async function unitMinutes(
@@ -27,7 +37,7 @@ export async function unitMinutes(
   const [name, scale] = UNIT_COLUMNS[column];
   const { rows } = await tx.raw<{ rows: { at: number; values: (number | null)[] | null }[] }>(
     `select extract(epoch from at)::int8 as at, to_json(${name}) as values
-     from string_frame where string_id = :stringId and at >= :from and at < :to order by at`,
+     from ${reportsOf(column)} f order by at`,
     { stringId, ...window },
   );
   for (const row of rows) row.values = row.values?.map((v) => (v === null ? null : v / scale)) ?? null;
@@ -100,8 +110,12 @@ export async function frameAt(
   const { rows } = await tx.raw<{ rows: FrameThen[] }>(
     `select extract(epoch from at)::int8 as at, voltage, voltage_in as "voltageIn", current, power, temperature,
             state as claim
-     from string_frame
-     where string_id = :stringId and at <= :at and at > :at::timestamptz - make_interval(secs => :withinS)
+     from ${framesOf({
+       columns: ['voltage', 'voltage_in', 'current', 'power', 'temperature', 'state'],
+       strings: oneString(':stringId'),
+       from: after('(:at::timestamptz - make_interval(secs => :withinS))'),
+       to: after(':at'),
+     })} f
      order by at desc limit 1`,
     { stringId, at, withinS },
   );
@@ -152,8 +166,7 @@ export async function unitSteps(
     `select extract(epoch from step)::int8 as at, json_agg(v order by o) as values
      from (select date_bin(make_interval(secs => :stepS), at, timestamptz '2000-01-01 00:00Z') as step, u.o,
                   (avg(u.v) / ${scale})::float8 as v
-           from string_frame cross join lateral unnest(${name}) with ordinality u(v, o)
-           where string_id = :stringId and at >= :from and at < :to group by 1, 2) s
+           from ${reportsOf(column)} f cross join lateral unnest(${name}) with ordinality u(v, o) group by 1, 2) s
      group by step order by step`,
     { stringId, stepS, ...window },
   );

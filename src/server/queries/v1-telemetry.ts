@@ -1,4 +1,5 @@
 import type { Tx } from '../db/transaction';
+import { anyString, framesOf, SPAN } from './frames';
 import { SITE_VISIBLE } from './visible-site';
 
 /** Readings of any span in pieces, by a cursor of the database: neither it nor we ever hold more than a piece. */
@@ -56,7 +57,8 @@ export async function keptSpan(
                 (select now() - make_interval(days => o.hide_raw_after_days) from organisation o
                  where o.id = (select actor_organisation())) end) as "from",
             now() + interval '1 day' as "to"
-     from pg_inherits i join pg_class c on c.oid = i.inhrelid where i.inhparent = to_regclass(:kept)`,
+     from pg_inherits i join pg_class c on c.oid = i.inhrelid
+     where i.inhparent in (to_regclass(:kept), to_regclass(case when :kept = 'string_frame' then 'packed_frame' end))`,
     { kept },
   );
   const [span] = rows;
@@ -89,7 +91,21 @@ export const framesInPieces = (tx: Tx, span: Span): AsyncGenerator<FrameRow[], v
     tx,
     `select string_id as number, at, voltage_sum as "voltageSum", power_sum as "powerSum", voltage,
             voltage_in as "voltageIn", current, power, temperature, signal, state
-     from string_frame where string_id = any (:ids::int4[]) and at >= :from and at < :to order by at, string_id`,
+     from ${framesOf({
+       columns: [
+         'voltage_sum',
+         'power_sum',
+         'voltage',
+         'voltage_in',
+         'current',
+         'power',
+         'temperature',
+         'signal',
+         'state',
+       ],
+       strings: anyString,
+       ...SPAN,
+     })} f order by at, string_id`,
     bound(span),
   );
 
