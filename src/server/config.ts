@@ -20,6 +20,12 @@ const settings = z.object({
   DATABASE_URL_INGEST: postgres.optional(),
   /** 1: the account may not create roles, so all run as one (shown on the status page). */
   DATABASE_ONE_ROLE: flag,
+  /** Place of a pooler in transaction mode. What needs a session of its own goes straight to DATABASE_URL's server. */
+  DATABASE_POOLER_URL: postgres.optional(),
+  /** A streaming replica, which answers readers of history and reports. */
+  DATABASE_REPLICA_URL: postgres.optional(),
+  /** Seconds that the replica may be behind; beyond them the primary answers. */
+  DATABASE_REPLICA_LAG_S: z.coerce.number().int().min(1).max(3600).default(10),
   HOST: z.string().default('127.0.0.1'),
   PORT: port.default(4321),
   /** What this process does, separated by commas. */
@@ -50,6 +56,8 @@ const settings = z.object({
   LOCAL_MAIL_FOLDER: z.string().optional(),
   /** The plant's switches, where a simulator runs beside the demo; only named on the demo's pages. */
   SIMULATOR_URL: z.url().optional(),
+  /** Whoever scrapes /metrics sends it as a bearer token. Unset: only this machine may, and not through a proxy. */
+  METRICS_TOKEN: z.string().min(16, 'must have 16 characters or more').optional(),
   /** Raw readings are kept for so many days, whole UTC days at a time. */
   RAW_KEPT_DAYS: z.coerce.number().int().min(7).max(3660).default(90),
   /** A day's frames are packed once it is older than so many days. */
@@ -64,6 +72,16 @@ const isHttps = (address: string | undefined): boolean => address?.startsWith('h
 
 const schema = settings
   .check(({ value, issues }) => {
+    // a pooler passes no role on: who connects through it must be that account
+    if (value.DATABASE_POOLER_URL && !value.DATABASE_ONE_ROLE)
+      for (const missing of ['DATABASE_URL_APP', 'DATABASE_URL_INGEST'] as const)
+        if (value[missing] === undefined)
+          issues.push({
+            code: 'custom',
+            path: [missing],
+            input: value[missing],
+            message: 'DATABASE_POOLER_URL is set: give the account that connects through it',
+          });
     for (const [given, missing] of [
       ['TLS_CERT', 'TLS_KEY'],
       ['TLS_KEY', 'TLS_CERT'],

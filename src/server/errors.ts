@@ -57,9 +57,11 @@ export function isDatabaseAway(error: unknown): boolean {
   const code = (error as { code?: unknown }).code;
   return (
     (typeof code === 'string' && AWAY.has(code)) ||
-    /Connection terminated|Timeout acquiring a connection|timeout exceeded when trying to connect/.test(
+    /Connection terminated|is not queryable|Timeout acquiring a connection|timeout exceeded when trying to connect/.test(
       error.message,
-    )
+    ) ||
+    // a pooler has one code for all that befalls it
+    (code === '08P01' && /query_wait_timeout|login fail|connect|crash|shut|closed/.test(error.message))
   );
 }
 

@@ -3,7 +3,7 @@ import { endpoint } from '../../server/http/endpoint';
 import { lowOutputCsv } from '../../server/reports/low-output-csv';
 import { readLowOutput } from '../../server/services/low-output';
 
-export const GET = endpoint({ permission: 'cause.read' }, async ({ tx, context }) =>
+export const GET = endpoint({ permission: 'cause.read', mayLag: true }, async ({ tx, context }) =>
   lowOutputCsv(
     await readLowOutput(tx, new Date()),
     lowOutputView.parse(Object.fromEntries(context.url.searchParams)),

@@ -4,7 +4,9 @@ import { mayUse, type Actor, type Permission } from '../../domain/access/permiss
 import { PERSON_HEADER } from '../../schemas/api/capture';
 import { asActor, type Tx } from '../db/transaction';
 import { AppError } from '../errors';
+import { asOnlooker } from '../replica';
 import { readBody } from './body';
+import { hasJustWritten } from './just-written';
 import { problem } from './problem';
 
 /**
@@ -91,6 +93,8 @@ function checkPerson({ request, locals }: APIContext): void {
 export function endpoint<P extends z.ZodType, Q extends z.ZodType, B extends z.ZodType, R = undefined>(
   spec: EndpointSpec<P, Q, B> & {
     permission: Permission;
+    /** History and reports, which only read: a replica may answer, some seconds behind. */
+    mayLag?: boolean;
     /** Takes a body that is no JSON, before the transaction begins: a slow sender holds no connection. */
     receive?: (
       call: Pick<ActorCall<z.infer<P>, z.infer<Q>, z.infer<B>>, 'actor' | 'params' | 'query' | 'context'>,
@@ -109,7 +113,10 @@ export function endpoint<P extends z.ZodType, Q extends z.ZodType, B extends z.Z
         });
       const call = await parsed(spec, context);
       const received = (await spec.receive?.({ ...call, actor })) as R;
-      return reply(await asActor(actor, (tx) => run({ ...call, actor, tx, received })));
+      const work = (tx: Tx): Promise<unknown> => run({ ...call, actor, tx, received });
+      return reply(
+        await (spec.mayLag ? asOnlooker(actor, work, hasJustWritten(context.request)) : asActor(actor, work)),
+      );
     } catch (error) {
       return problem(error, context.locals.requestId);
     }

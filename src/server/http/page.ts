@@ -5,6 +5,8 @@ import type { Viewer } from '../auth/viewer';
 import { asActor, type Tx } from '../db/transaction';
 import { AppError, ERROR_KINDS } from '../errors';
 import { log } from '../log';
+import { asOnlooker } from '../replica';
+import { hasJustWritten } from './just-written';
 import { explain } from './problem';
 
 export interface Loaded<T> {
@@ -21,13 +23,17 @@ export async function page<T>(
   astro: AstroGlobal,
   permission: Permission,
   load: (call: { actor: Actor; tx: Tx }) => Promise<T>,
+  /** For reports, which only read: a replica may answer, some seconds behind. */
+  { mayLag = false } = {},
 ): Promise<Loaded<T> | Response> {
   const { actor, viewer } = astro.locals;
   if (!actor || !viewer) return astro.redirect(paths.signIn(astro.url.pathname + astro.url.search), 303);
   try {
     if (!mayUse(actor.role, permission))
       throw new AppError('forbidden', { message: 'This page is for the people who look after sites.' });
-    return { actor, viewer, data: await asActor(actor, (tx) => load({ actor, tx })) };
+    const work = (tx: Tx): Promise<T> => load({ actor, tx });
+    const data = mayLag ? asOnlooker(actor, work, hasJustWritten(astro.request)) : asActor(actor, work);
+    return { actor, viewer, data: await data };
   } catch (error) {
     return problemPage(astro, error);
   }
@@ -41,7 +47,7 @@ export function publicPage(astro: AstroGlobal): { viewer: Viewer | null } {
 function problemPage(astro: AstroGlobal, error: unknown): Promise<Response> {
   const known = explain(error);
   if (!known || ERROR_KINDS[known.kind].status > 499)
-    log.error({ requestId: astro.locals.requestId, error }, 'a page failed');
+    log.error({ error }, 'a page failed');
   astro.locals.problem = {
     status: known ? ERROR_KINDS[known.kind].status : 500,
     title: known ? ERROR_KINDS[known.kind].title : 'Something failed on our side',

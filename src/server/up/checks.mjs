@@ -2,7 +2,7 @@ import fs from 'node:fs';
 import os from 'node:os';
 import path from 'node:path';
 import process from 'node:process';
-import { ensureChromium, ensureNginx, ensurePostgres } from './programs.mjs';
+import { ensureChromium, ensureNginx, ensurePgbouncer, ensurePostgres } from './programs.mjs';
 import { root } from './place.mjs';
 import { run } from './processes.mjs';
 import { elapsedS, say } from './say.mjs';
@@ -145,6 +145,7 @@ export async function test() {
   if (!process.env.DATABASE_URL) await ensurePostgres();
   await ensureChromium();
   await ensureNginx();
+  await ensurePgbouncer();
   return sum([], false);
 }
 

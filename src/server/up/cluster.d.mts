@@ -1,6 +1,12 @@
 export interface Cluster {
   home: string;
-  state: { port: number; rolesSecret: string; demoSecret: string; seed: 'none' | 'running' | 'done' };
+  state: {
+    port: number;
+    superPassword: string;
+    rolesSecret: string;
+    demoSecret: string;
+    seed: 'none' | 'running' | 'done';
+  };
   /** Address of the owner's database. */
   url: string;
   stop(): Promise<void>;

@@ -18,8 +18,8 @@ const logOf = (home) => path.join(home, 'postgres.log');
 const lockOf = (home) => path.join(home, 'cluster.lock');
 const usersOf = (home) => path.join(home, 'users');
 
-/** @param {string} bin @param {string} program @param {string[]} args */
-function postgres(bin, program, args, options = {}) {
+/** Runs one of PostgreSQL's programs to its end, as the account that may. @param {string} bin @param {string} program @param {string[]} args */
+export function postgres(bin, program, args, options = {}) {
   const env = Object.fromEntries(Object.entries(process.env).filter(([name]) => !name.startsWith('PG')));
   return run(path.join(bin, program), args, {
     cwd: '/', // ours may be a folder that the postgres account may not enter

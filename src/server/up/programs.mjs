@@ -120,18 +120,41 @@ async function withoutServices(work) {
   }
 }
 
-/** Debian's nginx, for the test of the recipe that puts it in front of the site. */
-export async function ensureNginx() {
-  const at = process.env.WAKELINE_NGINX ?? '/usr/sbin/nginx';
+/** A Debian package that tests and benches start themselves; its own service is not begun. */
+async function ensureServer(name, { setting, at, what }) {
   if (fs.existsSync(at)) return at;
-  if (isRoot() && hasApt()) await withoutServices(() => install(['nginx'], 'nginx'));
+  if (isRoot() && hasApt()) await withoutServices(() => install([name], name));
   if (!fs.existsSync(at))
     throw new Stop(
-      `The test of the reverse proxy needs nginx at ${at}.`,
-      'Run "sudo apt-get install -y nginx" once, or set WAKELINE_NGINX to its path, then test again.',
+      `${what} needs ${name} at ${at}.`,
+      `Run "sudo apt-get install -y ${name}" once, or set ${setting} to its path, then begin again.`,
     );
   return at;
 }
+
+/** Debian's nginx, for the test of the recipe that puts it in front of the site. */
+export const ensureNginx = () =>
+  ensureServer('nginx', {
+    setting: 'WAKELINE_NGINX',
+    at: process.env.WAKELINE_NGINX ?? '/usr/sbin/nginx',
+    what: 'The test of the reverse proxy',
+  });
+
+/** Debian's pgbouncer, for the test of the recipe that puts it in front of the database. */
+export const ensurePgbouncer = () =>
+  ensureServer('pgbouncer', {
+    setting: 'WAKELINE_PGBOUNCER',
+    at: process.env.WAKELINE_PGBOUNCER ?? '/usr/sbin/pgbouncer',
+    what: 'The test of the connection pooler',
+  });
+
+/** Debian's InfluxDB 1.6, a general store of time series, for the bench beside it. */
+export const ensureInflux = () =>
+  ensureServer('influxdb', {
+    setting: 'WAKELINE_INFLUXD',
+    at: process.env.WAKELINE_INFLUXD ?? '/usr/bin/influxd',
+    what: 'The bench against a general time-series store',
+  });
 
 /**
  * initdb and postgres refuse to run as root: then they get the ids of the postgres account (without su, so

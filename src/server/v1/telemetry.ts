@@ -11,8 +11,9 @@ import {
   type QuarterRecord,
   type UnitFrameRecord,
 } from '../../schemas/api/v1/telemetry';
-import { asActor, beginAsActor, type Tx } from '../db/transaction';
+import { asActor, type Tx } from '../db/transaction';
 import { found } from '../errors';
+import { asOnlooker, piecesAsOnlooker } from '../replica';
 import {
   daysInPieces,
   framesInPieces,
@@ -46,19 +47,6 @@ export function* windows(from: Date, to: Date, lengthMs: number): Generator<{ fr
   }
 }
 
-/** Reads one window in a transaction that ends with it, whoever stops first. */
-async function* inTransaction<Row>(
-  call: V1Call,
-  read: (tx: Tx) => AsyncGenerator<Row[], void, void>,
-): AsyncGenerator<Row[], void, void> {
-  const tx = await beginAsActor(call.actor);
-  try {
-    yield* read(tx);
-  } finally {
-    await tx.rollback(); // nothing was written; also ends the cursor
-  }
-}
-
 interface Streamed {
   site: string;
   strings: StreamString[];
@@ -74,13 +62,13 @@ async function* ofSpan<Row>(
   span: { from: string; to: string; kept: 'string_frame' | 'string_quarter'; lengthMs: number },
   read: (tx: Tx, window: { from: Date; to: Date }) => AsyncGenerator<Row[], void, void>,
 ): AsyncGenerator<Row[], void, void> {
-  const kept = await asActor(call.actor, (tx) => keptSpan(tx, span.kept));
+  const kept = await asOnlooker(call.actor, (tx) => keptSpan(tx, span.kept));
   if (!kept) return;
   const from = new Date(Math.max(Date.parse(span.from), kept.from.getTime()));
   const to = new Date(Math.min(Date.parse(span.to), kept.to.getTime()));
   for (const window of windows(from, to, span.lengthMs)) {
     yield []; // who reads may have left, or lost the right to
-    yield* inTransaction(call, (tx) => read(tx, window));
+    yield* piecesAsOnlooker(call.actor, (tx) => read(tx, window));
   }
 }
 
@@ -271,7 +259,7 @@ export const streamDays = streaming({
     const { query } = call;
     const { site, strings } = await streamed(call, query);
     const names = namesOf(strings);
-    const days = inTransaction(call, (tx) =>
+    const days = piecesAsOnlooker(call.actor, (tx) =>
       daysInPieces(tx, { stringIds: strings.map((s) => s.number), from: query.from, to: query.to }),
     );
     return {

@@ -6,7 +6,7 @@ import { organisationLogo } from '../../../../server/services/settings';
 import { siteFigures } from '../../../../server/services/figures';
 
 export const GET = endpoint(
-  { permission: 'figures.read', params: siteParams, query: monthQuery },
+  { permission: 'figures.read', params: siteParams, query: monthQuery, mayLag: true },
   async ({ tx, params, query }) =>
     monthReport(await siteFigures(tx, params.site, query.month, new Date()), await organisationLogo(tx)),
 );

@@ -4,6 +4,6 @@ import { endpoint } from '../../../../server/http/endpoint';
 import { heatCsv } from '../../../../server/reports/string-csv';
 
 export const GET = endpoint(
-  { permission: 'telemetry.export', params: stringParams, query: heatQuery },
+  { permission: 'telemetry.export', params: stringParams, query: heatQuery, mayLag: true },
   ({ tx, params, query }) => heatCsv(tx, params.string, query, new Date()),
 );
