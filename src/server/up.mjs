@@ -1,4 +1,4 @@
-// Brings Wakeline up: `node src/server/up.mjs start|dev|test|check|bench`. Needs nothing but Node and npm;
+// Brings Wakeline up: `node src/server/up.mjs start|dev|test|check|bench|drill`. Needs nothing but Node and npm;
 // packages, PostgreSQL and the demo it sees to itself. The pieces are in up/.
 import process from 'node:process';
 
@@ -8,6 +8,7 @@ const MODES = {
   test: 'every check and test',
   check: 'the quick half: format, lint, types, architecture, unit tests',
   bench: 'a measurement: npm run bench -- NAME',
+  drill: 'backs the installation up, restores it beside itself, compares',
 };
 
 function fits(version) {

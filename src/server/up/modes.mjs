@@ -35,6 +35,7 @@ const load = {
   dev: () => import('./start.mjs').then((m) => m.develop),
   test: () => import('./checks.mjs').then((m) => m.test),
   check: () => import('./checks.mjs').then((m) => m.check),
+  drill: () => import('./drill.mjs').then((m) => m.drill),
   bench: () => import('./bench.mjs').then((m) => m.bench),
 };
 
