@@ -3,6 +3,7 @@ import { CONDITION_WORDS, type Condition, type DrawnSlot } from './condition';
 import { Hatch } from './Hatch';
 import { listed } from './numbers';
 import { SCREEN, type Paint } from './paint';
+import { comb } from '../words/drawings-strings';
 
 interface Props {
   /** Unique in the document. */
@@ -23,7 +24,7 @@ export function combInWords(slots: readonly DrawnSlot[], teeth: readonly Tooth[]
       ? `${at.length} ${CONDITION_WORDS[condition]}`
       : `${listed(at)} ${CONDITION_WORDS[condition]}`,
   );
-  return `${slots.length} positions: ${parts.join('; ')}.`;
+  return comb.slotsPositionsParts(slots.length, parts.join('; '));
 }
 
 function ToothMark({

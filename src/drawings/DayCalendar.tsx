@@ -1,4 +1,5 @@
 import { SCREEN, type Paint } from './paint';
+import { dayCalendar } from '../words/drawings-output';
 
 export interface CalendarDay {
   /** yyyy-mm-dd */
@@ -18,7 +19,15 @@ interface Props {
   paint?: Paint;
 }
 
-const WEEKDAYS = ['Mon', 'Tue', 'Wed', 'Thu', 'Fri', 'Sat', 'Sun'];
+const WEEKDAYS = [
+  dayCalendar.mon,
+  dayCalendar.tue,
+  dayCalendar.wed,
+  dayCalendar.thu,
+  dayCalendar.fri,
+  dayCalendar.sat,
+  dayCalendar.sun,
+];
 /** 0: Monday */
 const weekday = (day: string): number => (new Date(`${day}T12:00:00Z`).getUTCDay() + 6) % 7;
 /** So that the number in a cell stays readable on it in both themes. */

@@ -1,5 +1,6 @@
 import { percent } from './numbers';
 import { SCREEN, type Paint } from './paint';
+import { dayRatios } from '../words/drawings-output';
 
 interface Props {
   /** yyyy-mm-dd, oldest first; what it made of what was expected. */
@@ -33,7 +34,10 @@ export function DayRatios({ days, limit, width = 420, height = 170, paint = SCRE
       viewBox={`0 0 ${width} ${height}`}
       width="100%"
       role="img"
-      aria-label={`Made of what was expected: ${days.map((d) => `${shown(d.day)} ${percent(d.ratio)}${d.low ? ', low' : ''}`).join('; ')}. Low below ${percent(limit)}.`}
+      aria-label={dayRatios.madeOfWhatWas(
+        days.map((d) => `${shown(d.day)} ${percent(d.ratio)}${d.low ? ', low' : ''}`).join('; '),
+        limit,
+      )}
       className={className}
       style={{ height: 'auto' }}
     >

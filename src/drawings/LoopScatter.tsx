@@ -1,5 +1,6 @@
 import { number, quantity } from './numbers';
 import { SCREEN, type Paint } from './paint';
+import { loopScatter } from '../words/drawings';
 
 export interface LoopScatterInput {
   /** V over A. */
@@ -53,14 +54,14 @@ export function LoopScatter({
   };
   const [low, high] = fit ? [line(fit.low), line(fit.high)] : [null, null];
   const said = fit
-    ? `${points.length} points. Resistance ${number(fit.ohm, 3)} ohm, between ${number(fit.low, 3)} and ${number(fit.high, 3)} nineteen times in twenty.`
-    : `${points.length} points, no line.`;
+    ? loopScatter.pointsResistanceOhmBetween(points.length, fit.ohm, fit.low, fit.high)
+    : loopScatter.pointsNoLine(points.length);
   return (
     <svg
       viewBox={`0 0 ${width} ${height}`}
       width="100%"
       role="img"
-      aria-label={`Sum of unit voltages less input voltage, over the string’s current. ${said}`}
+      aria-label={loopScatter.sumOfUnitVoltages(said)}
       className={className}
       style={{ height: 'auto' }}
     >
@@ -89,7 +90,7 @@ export function LoopScatter({
         </text>
       ))}
       <text x={width - M.right} y={height - M.bottom + 34} textAnchor="end" fill={paint.ink2} {...FONT}>
-        Current of the string, A
+        {loopScatter.currentOfTheString}
       </text>
       <g clipPath={`url(#loop-plot-${width})`}>
         {low && high && (
@@ -119,7 +120,7 @@ export function LoopScatter({
       </g>
       {fit && (
         <text x={M.left + 10} y={M.top + 12} fill={paint.ink} fontWeight="600" {...FONT}>
-          {quantity(fit.ohm, 'Ω', 3)} ({number(fit.low, 3)} to {number(fit.high, 3)})
+          {loopScatter.ohmLowToHigh(fit.ohm, fit.low, fit.high)}
         </text>
       )}
     </svg>

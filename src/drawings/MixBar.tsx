@@ -2,6 +2,7 @@ import { Hatch } from './Hatch';
 import { MIX_WORDS, mixParts, mixWidths, type Mix, type MixPart } from './mix';
 import { number } from './numbers';
 import { SCREEN, type Paint } from './paint';
+import { mixBar } from '../words/drawings-strings';
 
 interface Props {
   /** Unique in the document. */
@@ -73,7 +74,10 @@ export function MixBar({ id, counts, width = 190, height = 16, paint = SCREEN }:
       height={height}
       viewBox={`0 0 ${width} ${height}`}
       role="img"
-      aria-label={`${number(counts.units)} units: ${parts.map((p) => `${number(p.units)} ${MIX_WORDS[p.part]}`).join(', ') || 'none'}`}
+      aria-label={mixBar.unitsUnitsMap(
+        counts.units,
+        parts.map((p) => `${number(p.units)} ${MIX_WORDS[p.part]}`).join(', '),
+      )}
       style={{ maxWidth: '100%' }}
     >
       <defs>

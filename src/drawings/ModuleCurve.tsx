@@ -2,6 +2,7 @@ import type { ModuleLine } from './module-curve';
 import { number } from './numbers';
 import { SCREEN, type Paint } from './paint';
 import { ticksTo } from './ticks';
+import { moduleCurve } from '../words/drawings';
 
 interface Props {
   lines: readonly ModuleLine[];
@@ -82,10 +83,10 @@ export function ModuleCurve({
         </text>
       ))}
       <text x={plot.right} y={plot.bottom + 33} textAnchor="end" {...text}>
-        voltage, V
+        {moduleCurve.voltageV}
       </text>
       <text x={plot.left + 6} y={plot.top - 4} {...text}>
-        {show === 'current' ? 'current, A' : 'power, W'}
+        {show === 'current' ? moduleCurve.currentA : moduleCurve.powerW}
       </text>
       {lines.map((line) => (
         <path

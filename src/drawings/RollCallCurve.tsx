@@ -1,5 +1,6 @@
 import { SCREEN, type Paint } from './paint';
 import { ticksTo } from './ticks';
+import { rollCallCurve } from '../words/drawings';
 
 interface Props {
   /** Units on the as-built. */
@@ -57,7 +58,12 @@ export function RollCallCurve({
       viewBox={`0 0 ${width} ${height}`}
       width="100%"
       role="img"
-      aria-label={`${heardAtS.length} of ${total} units heard after ${Math.round(nowS / 60)} minutes${last ? `; ${Math.round(last.expected)} expected after ${Math.round(last.atS / 60)} minutes` : ''}.`}
+      aria-label={rollCallCurve.ofUnitsHeardAfter(
+        heardAtS.length,
+        total,
+        Math.round(nowS / 60),
+        last ? `; ${Math.round(last.expected)} expected after ${Math.round(last.atS / 60)} minutes` : '',
+      )}
       style={{ height: 'auto' }}
     >
       {levels.map((v) => (
@@ -77,12 +83,12 @@ export function RollCallCurve({
           fill={paint.ink2}
           {...FONT}
         >
-          {Math.round(s / 60)} min
+          {rollCallCurve.roundMin(Math.round(s / 60))}
         </text>
       ))}
       <path d={`M${plot.left} ${y(total)}H${plot.right}`} stroke={paint.ink} strokeWidth="1.5" />
       <text x={plot.right} y={y(total) - 7} textAnchor="end" fill={paint.ink} fontWeight="600" {...FONT}>
-        {total} on the as-built
+        {rollCallCurve.onTheAsBuilt(total)}
       </text>
       <path d={band} fill={paint.petrolWash} />
       <path d={line} fill="none" stroke={paint.petrol} strokeWidth="2" strokeDasharray="5 4" />

@@ -9,6 +9,7 @@ import {
   type StaircaseInput,
   type Step,
 } from './staircase-geometry';
+import { staircase } from '../words/drawings-strings';
 
 interface Props extends StaircaseInput {
   /** Unique in the document. */
@@ -36,15 +37,15 @@ function bandOf(condition: Condition, paint: Paint): { ground: string; text: str
 
 /** What the picture shows, for who cannot see it. */
 export function staircaseInWords(g: StaircaseGeometry, input: StaircaseInput): string {
-  const parts = [`Voltage staircase of ${input.slots.length} positions.`];
-  if (input.voltage !== null) parts.push(`The string gives ${volts(input.voltage)}.`);
+  const parts = [staircase.voltageStaircaseOfPositions(input.slots.length)];
+  if (input.voltage !== null) parts.push(staircase.theStringGives(input.voltage));
   const expected = input.expectedInShutdown ?? input.expectedVoltage;
-  if (expected !== null) parts.push(`Expected: ${volts(expected)}.`);
+  if (expected !== null) parts.push(staircase.expectedExpected(expected));
   if (g.total)
     parts.push(
       g.total.passing === null
-        ? 'Its units tell nothing themselves.'
-        : `That is what ${g.total.passing} of ${g.total.of} passing units give; positions unknown.`,
+        ? staircase.itsUnitsTellNothing
+        : staircase.thatIsWhatOf(g.total.passing, g.total.of),
     );
   const conditions: Condition[] = [
     'not_shutting_down',
@@ -57,10 +58,11 @@ export function staircaseInWords(g: StaircaseGeometry, input: StaircaseInput): s
   ];
   for (const condition of conditions) {
     const at = g.steps.filter((s) => s.condition === condition).map((s) => s.position);
-    if (at.length === g.steps.length && at.length > 0) parts.push(`All are ${CONDITION_WORDS[condition]}.`);
+    if (at.length === g.steps.length && at.length > 0)
+      parts.push(staircase.allAre(CONDITION_WORDS[condition]));
     else if (at.length > 0)
       parts.push(
-        `${at.length === 1 ? 'Position' : 'Positions'} ${listed(at)}: ${CONDITION_WORDS[condition]}.`,
+        `${at.length === 1 ? staircase.position : staircase.positions} ${listed(at)}: ${CONDITION_WORDS[condition]}.`,
       );
   }
   return parts.join(' ');
@@ -170,8 +172,7 @@ function Total({ g, paint }: { g: StaircaseGeometry; paint: Paint }) {
   if (!g.total) return null;
   const { left, right, bottom } = g.plot;
   const { y, passing, of } = g.total;
-  const words =
-    passing === null ? 'positions unknown' : `${passing} of ${of} pass by the total, positions unknown`;
+  const words = passing === null ? staircase.positionsUnknown : staircase.ofPassByThe(passing, of);
   return (
     <g>
       <rect x={left} y={y} width={right - left} height={Math.max(0, bottom - y)} fill={paint.petrolWash} />
@@ -271,7 +272,7 @@ export function Staircase({
           </text>
         ))}
       <text x={left} y={bottom + 35} fill={paint.ink2} {...FONT}>
-        Position along the string, from the negative end
+        {staircase.positionAlongTheString}
       </text>
     </svg>
   );

@@ -1,6 +1,7 @@
 import { gappedLine } from './gapped-line';
 import { SCREEN, type Paint } from './paint';
 import { ticksTo } from './ticks';
+import { testLines } from '../words/drawings';
 
 export interface TestLine {
   name: string;
@@ -93,22 +94,22 @@ export function TestLines({
         fill="none"
       />
       <text x={x(0) + 4} y={plot.top - 6} fill={paint.ink2} {...FONT}>
-        command
+        {testLines.command}
       </text>
       <text x={x(limits.afterS) + 4} y={plot.top + 10} fill={paint.ink2} {...FONT}>
         {limits.afterS} s
       </text>
       <text x={plot.right} y={y(limits.insideV) - 4} textAnchor="end" fill={paint.ink2} {...FONT}>
-        {limits.insideV} V inside
+        {testLines.insideVVInside(limits.insideV)}
       </text>
       <text x={plot.right} y={y(limits.outsideV) - 4} textAnchor="end" fill={paint.ink2} {...FONT}>
-        {limits.outsideV} V outside
+        {testLines.outsideVVOutside(limits.outsideV)}
       </text>
       {releaseS !== null && releaseS <= endS && (
         <>
           <path d={`M${x(releaseS)} ${plot.top}V${plot.bottom}`} stroke={paint.ink3} />
           <text x={x(releaseS) + 4} y={plot.top + 24} fill={paint.ink2} {...FONT}>
-            released
+            {testLines.released}
           </text>
         </>
       )}

@@ -2,6 +2,7 @@ import { conditionOf, CONDITION_WORDS, type Condition, type DrawnSlot } from './
 import { listed } from './numbers';
 import { SCREEN, type Paint } from './paint';
 import { across, focusOn, rowsOf, sheetOf, spanOf, type Point } from './walk-geometry';
+import { walk } from '../words/drawings-strings';
 
 export interface WalkedString {
   name: string;
@@ -157,7 +158,7 @@ export function Walk({
       viewBox={`0 0 ${width} ${sheet.height.toFixed(0)}`}
       width="100%"
       role="img"
-      aria-label={`Roof with the path of ${listed(lead.map((s) => s.name))}. ${words}`}
+      aria-label={walk.roofWithThePath(listed(lead.map((s) => s.name)), words)}
       style={{ height: 'auto' }}
     >
       <clipPath id={clip}>

@@ -1,4 +1,5 @@
 import type { UnitState, Verdict } from '../domain/verdicts/codes';
+import { drawingsStringsCondition } from '../words/drawings-strings';
 
 /** What a drawing needs to know of one slot; the SlotNow of the API satisfies it. */
 export interface DrawnSlot {
@@ -42,13 +43,13 @@ export function rise(slot: DrawnSlot): number | null {
 }
 
 export const CONDITION_WORDS: Record<Condition, string> = {
-  empty: 'no unit',
-  untold: 'tells nothing',
-  passing: 'passing',
-  not_shutting_down: 'not shutting down',
-  stuck: 'stuck',
-  shutdown: 'in shutdown',
-  silent: 'silent',
-  unheard: 'unheard',
-  dark: 'dark',
+  empty: drawingsStringsCondition.noUnit,
+  untold: drawingsStringsCondition.tellsNothing,
+  passing: drawingsStringsCondition.passing,
+  not_shutting_down: drawingsStringsCondition.notShuttingDown,
+  stuck: drawingsStringsCondition.stuck,
+  shutdown: drawingsStringsCondition.inShutdown,
+  silent: drawingsStringsCondition.silent,
+  unheard: drawingsStringsCondition.unheard,
+  dark: drawingsStringsCondition.dark,
 };

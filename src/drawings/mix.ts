@@ -1,3 +1,4 @@
+import { drawingsStringsMix } from '../words/drawings-strings';
 /** Units of a site or string by state; the Counts of the API satisfy it. */
 export interface Mix {
   units: number;
@@ -29,14 +30,14 @@ export function mixParts(mix: Mix): { part: MixPart; units: number }[] {
 }
 
 export const MIX_WORDS: Record<MixPart, string> = {
-  not_shutting_down: 'not shutting down',
-  passing: 'passing',
-  stuck: 'stuck',
-  shutdown: 'in shutdown',
-  silent: 'silent',
-  unheard: 'unheard',
-  dark: 'dark',
-  untold: 'tell nothing themselves',
+  not_shutting_down: drawingsStringsMix.notShuttingDown,
+  passing: drawingsStringsMix.passing,
+  stuck: drawingsStringsMix.stuck,
+  shutdown: drawingsStringsMix.inShutdown,
+  silent: drawingsStringsMix.silent,
+  unheard: drawingsStringsMix.unheard,
+  dark: drawingsStringsMix.dark,
+  untold: drawingsStringsMix.tellNothingThemselves,
 };
 
 /** Widths in px that add up to `width`, none under 2 px with a gap of 1 between. */

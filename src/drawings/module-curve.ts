@@ -1,6 +1,7 @@
 import type { ModuleType } from '../domain/equipment/module-type';
 import { diodeParameters, type DiodeReference } from '../domain/photovoltaics/module/diode-parameters';
 import { curvePoints, voltageAtCurrent } from '../domain/photovoltaics/module/single-diode';
+import { drawingsModuleCurve } from '../words/drawings';
 
 export interface CurveCondition {
   /** W/m² */
@@ -39,7 +40,7 @@ export function moduleLine(reference: DiodeReference, condition: CurveCondition)
 
 /** The points of a datasheet that a curve should pass, at STC. */
 export const sheetPoints = (type: ModuleType): { label: string; voltage: number; current: number }[] => [
-  { label: 'isc', voltage: 0, current: type.iscRef },
-  { label: 'vmp, imp', voltage: type.vmpRef, current: type.impRef },
-  { label: 'voc', voltage: type.vocRef, current: 0 },
+  { label: drawingsModuleCurve.isc, voltage: 0, current: type.iscRef },
+  { label: drawingsModuleCurve.vmpImp, voltage: type.vmpRef, current: type.impRef },
+  { label: drawingsModuleCurve.voc, voltage: type.vocRef, current: 0 },
 ];

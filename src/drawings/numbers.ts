@@ -1,3 +1,5 @@
+import { COUNTS, isOne, lists, LOCALE, pluralOf } from '../words/language';
+
 /**
  * How numbers are written, on screen, in mail and in reports: thousands with a comma, a real minus sign, a
  * space that does not break before the unit, a dash for what is not known.
@@ -9,7 +11,7 @@ const formats = new Map<number, Intl.NumberFormat>();
 function format(digits: number): Intl.NumberFormat {
   let found = formats.get(digits);
   if (!found) {
-    found = new Intl.NumberFormat('en-GB', { minimumFractionDigits: digits, maximumFractionDigits: digits });
+    found = new Intl.NumberFormat(LOCALE, { minimumFractionDigits: digits, maximumFractionDigits: digits });
     formats.set(digits, found);
   }
   return found;
@@ -79,7 +81,7 @@ export const irradiance = (value: Value): string => quantity(value, 'W/m²');
 /** Money in a currency of ISO 4217: whole units from a hundred up, smaller sums with their parts. */
 export function money(value: Value, currency: string): string {
   if (!known(value)) return UNKNOWN;
-  const text = new Intl.NumberFormat('en-GB', {
+  const text = new Intl.NumberFormat(LOCALE, {
     style: 'currency',
     currency,
     currencyDisplay: 'narrowSymbol',
@@ -91,28 +93,13 @@ export function money(value: Value, currency: string): string {
 export const percent = (ratio: Value, digits = 0): string =>
   quantity(known(ratio) ? ratio * 100 : null, '%', digits);
 
-const WORDS = [
-  'No',
-  'One',
-  'Two',
-  'Three',
-  'Four',
-  'Five',
-  'Six',
-  'Seven',
-  'Eight',
-  'Nine',
-  'Ten',
-  'Eleven',
-  'Twelve',
-];
 /** A count that begins a sentence: a word up to twelve, figures above. */
-export const countAtStart = (n: number): string => WORDS[n] ?? number(n);
+export const countAtStart = (n: number): string => COUNTS[n] ?? number(n);
 /** "1 unit", "1,240 units". */
-export const counted = (n: number, one: string, many = `${one}s`): string =>
-  `${number(n)}${NBSP}${n === 1 ? one : many}`;
+export const counted = (n: number, one: string, many = pluralOf(one)): string =>
+  `${number(n)}${NBSP}${isOne(n) ? one : many}`;
 /** "5", "5 and 9", "3, 5 and 9". */
 export function listed(items: readonly (string | number)[]): string {
   if (items.length < 2) return String(items[0] ?? '');
-  return `${items.slice(0, -1).join(', ')} and ${items[items.length - 1]}`;
+  return lists.lastTwo(items.slice(0, -1).join(', '), items[items.length - 1] ?? '');
 }

@@ -1,3 +1,5 @@
+import { lengths, LOCALE } from '../words/language';
+
 /** How times are written: in the site's zone, 24 hours, the zone named where the reader could mistake it. */
 type Instant = string | number | Date;
 
@@ -6,7 +8,7 @@ function formatter(timeZone: string, options: Intl.DateTimeFormatOptions): Intl.
   const key = timeZone + JSON.stringify(options);
   let found = made.get(key);
   if (!found) {
-    found = new Intl.DateTimeFormat('en-GB', { timeZone, hourCycle: 'h23', ...options });
+    found = new Intl.DateTimeFormat(LOCALE, { timeZone, hourCycle: 'h23', ...options });
     made.set(key, found);
   }
   return found;
@@ -52,13 +54,13 @@ export const clockOrDate = (at: Instant, now: Instant, timeZone: string): string
 /** A length of time in its largest whole part: "18 s", "41 min", "3 h", "5 days". */
 export function duration(seconds: number): string {
   const s = Math.max(0, Math.round(seconds));
-  if (s < 90) return `${s} s`;
-  if (s < 90 * 60) return `${Math.round(s / 60)} min`;
-  if (s < 36 * 3600) return `${Math.round(s / 3600)} h`;
-  return `${Math.round(s / 86_400)} days`;
+  if (s < 90) return lengths.seconds(s);
+  if (s < 90 * 60) return lengths.minutes(Math.round(s / 60));
+  if (s < 36 * 3600) return lengths.hours(Math.round(s / 3600));
+  return lengths.days(Math.round(s / 86_400));
 }
 /** "just now", "41 min ago". */
 export function ago(at: Instant, now: Instant): string {
   const seconds = (new Date(now).getTime() - new Date(at).getTime()) / 1000;
-  return seconds < 5 ? 'just now' : `${duration(seconds)} ago`;
+  return seconds < 5 ? lengths.justNow : lengths.ago(duration(seconds));
 }

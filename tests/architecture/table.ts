@@ -51,6 +51,7 @@ export const FEATURES = [
 const AREAS = FEATURES.map((name) => `src/features/${name}`);
 
 const EVERYTHING = [
+  'src/words',
   'src/components',
   'src/drawings',
   ...AREAS,
@@ -65,6 +66,7 @@ const EVERYTHING = [
 ] as const;
 /** What routes may use: all of src but the database itself. */
 const ROUTED = [
+  'src/words',
   'src/components',
   'src/drawings',
   ...AREAS,
@@ -76,7 +78,7 @@ const ROUTED = [
   'src/styles',
   'src/domain',
 ];
-const FEATURE = ['src/components', 'src/drawings', 'src/lib', 'src/schemas', 'src/domain'];
+const FEATURE = ['src/words', 'src/components', 'src/drawings', 'src/lib', 'src/schemas', 'src/domain'];
 
 export const TABLE: readonly Row[] = [
   {
@@ -100,12 +102,18 @@ export const TABLE: readonly Row[] = [
       'time',
     ],
   },
+  {
+    folder: 'src/words', // what people read; its formatters, and types of what it speaks of
+    may: ['src/drawings/numbers.ts', 'src/drawings/times.ts', 'src/schemas', 'src/domain'],
+    packages: [],
+    subfolders: [],
+  },
   { folder: 'src/schemas', may: ['src/domain'], packages: ['zod'], subfolders: ['api'] },
-  { folder: 'src/lib', may: ['src/schemas', 'src/domain'], packages: 'browser', subfolders: [] },
-  { folder: 'src/drawings', may: ['src/domain'], packages: ['react'], subfolders: [] },
+  { folder: 'src/lib', may: ['src/words', 'src/schemas', 'src/domain'], packages: 'browser', subfolders: [] },
+  { folder: 'src/drawings', may: ['src/words', 'src/domain'], packages: ['react'], subfolders: [] },
   {
     folder: 'src/components',
-    may: ['src/drawings', 'src/lib', 'src/schemas', 'src/domain'],
+    may: ['src/words', 'src/drawings', 'src/lib', 'src/schemas', 'src/domain'],
     packages: 'browser',
     subfolders: [
       'ui',
@@ -141,7 +149,7 @@ export const TABLE: readonly Row[] = [
   },
   {
     folder: 'src/server',
-    may: ['src/server/db', 'src/server/queries', 'src/drawings', 'src/schemas', 'src/domain'],
+    may: ['src/server/db', 'src/server/queries', 'src/words', 'src/drawings', 'src/schemas', 'src/domain'],
     packages: 'any',
     subfolders: [
       'db',
@@ -153,6 +161,7 @@ export const TABLE: readonly Row[] = [
       'live',
       'jobs',
       'mail',
+      'observe',
       'files',
       'reports',
       'cli',
@@ -216,6 +225,7 @@ export const SERVER_PACKAGES = [
   'sharp',
   'pg-copy-streams',
   'rate-limiter-flexible',
+  'prom-client',
 ];
 
 /** The row of a file: the one with the longest prefix. */

@@ -2,6 +2,7 @@ import { encode } from 'uqr';
 import { paths } from '../../schemas/paths';
 import { ButtonLink } from '../ui/Button';
 import { Fold } from '../ui/Fold';
+import { openOnPhone } from '../../words/shared-capture';
 
 interface Props {
   /** Public identifier of the site. */
@@ -42,22 +43,17 @@ export function OpenOnPhone({ site, siteName, origin }: Props) {
   const address = new URL(paths.capture(site), origin).href;
   const secure = address.startsWith('https:') || /^(localhost|127\.|\[::1\])/.test(new URL(address).hostname);
   return (
-    <Fold title="Readings and checks on a phone" opens="Show the code">
+    <Fold title={openOnPhone.readingsAndChecksOn} opens={openOnPhone.showTheCode}>
       <div className="flex flex-wrap items-start gap-4 pb-4">
-        <QrCode text={address} label={`Code of the address ${address}`} />
+        <QrCode text={address} label={openOnPhone.codeOfTheAddress(address)} />
         <div className="min-w-0 max-w-[420px] flex-1">
-          <p className="text-[15px] leading-[21px]">
-            {`Scan it once where there is a network: from then on the page of ${siteName} opens on that phone without one, and what is recorded is sent when the network returns.`}
-          </p>
+          <p className="text-[15px] leading-[21px]">{openOnPhone.scanItOnceWhere(siteName)}</p>
           {!secure && (
-            <p className="mt-2 text-[15px] leading-[21px] text-rust-ink">
-              This site is reached by plain HTTP: phones then open no camera for it and keep no page. Give it
-              a certificate (TLS_CERT) or a proxy that speaks HTTPS.
-            </p>
+            <p className="mt-2 text-[15px] leading-[21px] text-rust-ink">{openOnPhone.thisSiteIsReached}</p>
           )}
           <p className="mt-2 break-all text-sm text-ink-2">{address}</p>
           <ButtonLink className="mt-3 min-h-[44px]" href={paths.capture(site)}>
-            Open on this device
+            {openOnPhone.openOnThisDevice}
           </ButtonLink>
         </div>
       </div>

@@ -8,6 +8,7 @@ import type { CauseNow } from '../../schemas/api/now';
 import { paths } from '../../schemas/paths';
 import { Button } from '../ui/Button';
 import { siteClock, useReaderZone } from '../ui/reader-zone';
+import { sharedCausesAcknowledge } from '../../words/shared-causes';
 
 interface Props {
   cause: Pick<CauseNow, 'key' | 'siteId' | 'siteName'>;
@@ -52,7 +53,9 @@ export function Acknowledge({ cause, contact, taken, now, timeZone, onTaken }: P
             mutation.mutate();
           }}
         >
-          {mutation.isPending ? 'Putting your name to it …' : 'Acknowledge and call the site'}
+          {mutation.isPending
+            ? sharedCausesAcknowledge.puttingYourNameTo
+            : sharedCausesAcknowledge.acknowledgeAndCallThe}
         </Button>
         <p role="alert" className="mt-2 text-sm text-rust-ink empty:hidden">
           {mutation.error instanceof ApiError ? mutation.error.message : ''}
@@ -62,7 +65,8 @@ export function Acknowledge({ cause, contact, taken, now, timeZone, onTaken }: P
   return (
     <div className="mt-3 border-t border-rule-faint pt-3" role="status">
       <p className="text-sm text-ink-2">
-        <strong className="font-semibold text-ink">{taken.person}</strong> has it since{' '}
+        <strong className="font-semibold text-ink">{taken.person}</strong>
+        {sharedCausesAcknowledge.hasItSince}
         <time dateTime={taken.at} title={fullTime(taken.at, timeZone)}>
           {siteClock(taken.at, now, timeZone, readerZone)}
         </time>
@@ -75,15 +79,17 @@ export function Acknowledge({ cause, contact, taken, now, timeZone, onTaken }: P
             href={dialled(contact.phone)}
             className="target link inline-flex items-center text-[17px] font-semibold"
           >
-            Call {contact.phone}
+            {sharedCausesAcknowledge.callPhone(contact.phone)}
           </a>
           <span className="text-sm text-ink-2">{contact.name || cause.siteName}</span>
         </p>
       ) : (
-        <p className="mt-1 text-sm">No telephone number is on record for {cause.siteName}.</p>
+        <p className="mt-1 text-sm">{sharedCausesAcknowledge.noTelephoneNumberIs(cause.siteName)}</p>
       )}
       {contact?.shutdownSwitchPlace && (
-        <p className="text-sm text-ink-2">Its shutdown switch: {contact.shutdownSwitchPlace}.</p>
+        <p className="text-sm text-ink-2">
+          {sharedCausesAcknowledge.itsShutdownSwitch(contact.shutdownSwitchPlace)}
+        </p>
       )}
     </div>
   );

@@ -1,5 +1,4 @@
 import type { ReactNode } from 'react';
-import { energy, percent } from '../../drawings/numbers';
 import { fullTime } from '../../drawings/times';
 import type { Acknowledgement, AcknowledgeReply, SiteContact } from '../../schemas/api/fleet';
 import type { CauseNow } from '../../schemas/api/now';
@@ -11,6 +10,7 @@ import { siteClock, useReaderZone } from '../ui/reader-zone';
 import { Acknowledge } from './Acknowledge';
 import { placesInWords, placesOf, positionsInWords } from './places';
 import { alternativesInWords, isHazard, treatAsLive } from './words';
+import { causeSheet } from '../../words/shared-causes';
 
 interface Props {
   cause: CauseNow;
@@ -29,7 +29,7 @@ export function CauseTag({ verdict }: Pick<CauseNow, 'verdict'>) {
   if (verdict === 'silent')
     return (
       <Tag tone="slate" shape="▨">
-        Silent
+        {causeSheet.silent}
       </Tag>
     );
   return <StateTag state={null} verdict={verdict} />;
@@ -48,7 +48,7 @@ function Where({ cause, begins }: { cause: CauseNow; begins: boolean }) {
         <span key={place.stringId}>
           {i > 0 && '; '}
           <a href={paths.string(cause.siteId, place.stringId)}>
-            {begins && i === 0 ? 'String' : 'string'} {place.stringName}
+            {begins && i === 0 ? causeSheet.string : causeSheet.string2} {place.stringName}
           </a>
           , {positionsInWords(place.positions)}
         </span>
@@ -71,8 +71,8 @@ export function CauseSheet({
   const readerZone = useReaderZone();
   const live = treatAsLive(cause);
   const facts = [
-    cause.lossWhPerDay !== null && cause.lossWhPerDay > 0 ? `losing ${energy(cause.lossWhPerDay)} a day` : '',
-    cause.confidence < 0.9 ? `${percent(cause.confidence)} sure` : '',
+    cause.lossWhPerDay !== null && cause.lossWhPerDay > 0 ? causeSheet.losingDay(cause.lossWhPerDay) : '',
+    cause.confidence < 0.9 ? causeSheet.confidenceSure(cause.confidence) : '',
   ].filter(Boolean);
   return (
     <article
@@ -93,7 +93,7 @@ export function CauseSheet({
           {live && <strong className="font-semibold text-ink"> {live}</strong>}
         </p>
         <p className="mt-2 text-sm text-ink-2">
-          since{' '}
+          {causeSheet.since}
           <time dateTime={cause.since} title={fullTime(cause.since, timeZone)}>
             {siteClock(cause.since, now, timeZone, readerZone)}
           </time>
@@ -101,7 +101,7 @@ export function CauseSheet({
         </p>
         {cause.alternatives.length > 0 && (
           <p className="mt-1 text-sm text-ink-2">
-            It could also be: {alternativesInWords(cause.alternatives)}.
+            {causeSheet.itCouldAlsoBe(alternativesInWords(cause.alternatives))}
           </p>
         )}
         <p className="no-print mt-1">
@@ -109,7 +109,7 @@ export function CauseSheet({
             href={withQuery(paths.causes(), { site: cause.siteId, kind: cause.verdict })}
             className="target inline-flex items-center text-sm text-petrol hover:underline"
           >
-            Evidence, history, what to check first
+            {causeSheet.evidenceHistoryWhatTo}
           </a>
         </p>
         {isHazard(cause) && (

@@ -1,6 +1,7 @@
 import { countAtStart } from '../../drawings/numbers';
 import type { CauseNow } from '../../schemas/api/now';
 import { concerned } from './places';
+import { sharedCausesFinding } from '../../words/shared-causes';
 
 /** A count in the middle of a sentence: a word up to twelve, figures above. */
 export const countInside = (n: number): string => countAtStart(n).toLowerCase();
@@ -20,7 +21,9 @@ export function subject(of: { units: number; strings: number }): string {
 /** "at Kestrel Row School", "at two sites". */
 function place(causes: readonly CauseNow[]): string {
   const names = new Map(causes.map((c) => [c.siteId, c.siteName]));
-  return names.size === 1 ? `at ${[...names.values()][0]}` : `at ${countInside(names.size)} sites`;
+  return names.size === 1
+    ? sharedCausesFinding.atX([...names.values()][0])
+    : sharedCausesFinding.atSites(countInside(names.size));
 }
 
 export const total = (causes: readonly CauseNow[]) => concerned(causes.flatMap((c) => c.units));
@@ -33,23 +36,23 @@ export function headingOf(verdict: CauseNow['verdict'], causes: readonly CauseNo
   const who = `${subject(of)} ${place(causes)}`;
   switch (verdict) {
     case 'not_shutting_down':
-      return `${who} did not shut down`;
+      return sharedCausesFinding.didNotShutDown(who);
     case 'stuck':
       return of.units === 0
-        ? `${who} ${single ? 'has' : 'have'} units stuck in shutdown`
-        : `${who} ${single ? 'is' : 'are'} stuck in shutdown`;
+        ? sharedCausesFinding.unitsStuckInShutdown(who, single)
+        : sharedCausesFinding.stuckInShutdown(who, single);
     case 'unconfirmed':
-      return `The shutdown of ${lowerFirst(subject(of))} ${place(causes)} can't be confirmed`;
+      return sharedCausesFinding.theShutdownOfCant(lowerFirst(subject(of)), place(causes));
     case 'silent':
-      return `${who} ${single ? 'is' : 'are'} silent`;
+      return sharedCausesFinding.whoSingleSilent(who, single);
   }
 }
 const lowerFirst = (text: string): string => text.charAt(0).toLowerCase() + text.slice(1);
 
 /** What follows from a finding and what to do; `at`: "there", "at Kestrel Row School". */
 export const WHAT_TO_DO: Record<CauseNow['verdict'], (at: string) => string> = {
-  not_shutting_down: (at) => `Treat every string ${at} as live and call the site.`,
-  stuck: (at) => `They hold back power ${at}; the causes below say which part they share.`,
-  unconfirmed: (at) => `Treat their strings ${at} as live until a rated meter shows otherwise.`,
-  silent: (at) => `Whether they follow a shutdown ${at} can't be confirmed until they are heard again.`,
+  not_shutting_down: (at) => sharedCausesFinding.treatEveryStringAs(at),
+  stuck: (at) => sharedCausesFinding.theyHoldBackPower(at),
+  unconfirmed: (at) => sharedCausesFinding.treatTheirStringsAs(at),
+  silent: (at) => sharedCausesFinding.whetherTheyFollowShutdown(at),
 };

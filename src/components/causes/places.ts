@@ -1,5 +1,6 @@
 import { counted, listed } from '../../drawings/numbers';
 import type { CauseNow } from '../../schemas/api/now';
+import { sharedCausesPlaces } from '../../words/shared-causes';
 
 type Unit = CauseNow['units'][number];
 
@@ -33,9 +34,9 @@ const NAMED_MAX = 8;
 
 /** "positions 3 and 11", "14 units", "positions unknown". */
 export function positionsInWords(positions: readonly number[]): string {
-  if (positions.length === 0) return 'positions unknown';
-  if (positions.length > NAMED_MAX) return counted(positions.length, 'unit');
-  return `${positions.length === 1 ? 'position' : 'positions'} ${listed(positions)}`;
+  if (positions.length === 0) return sharedCausesPlaces.positionsUnknown;
+  if (positions.length > NAMED_MAX) return sharedCausesPlaces.countedPositionsUnit(positions.length);
+  return `${positions.length === 1 ? sharedCausesPlaces.position : sharedCausesPlaces.positions} ${listed(positions)}`;
 }
 
 /** "string C2, positions 3 and 11", "strings D1 and D2, 20 units", "12 strings, 168 units". */
@@ -43,13 +44,14 @@ export function placesInWords(units: readonly Unit[]): string {
   const places = placesOf(units);
   const first = places[0];
   if (!first) return '';
-  if (places.length === 1) return `string ${first.stringName}, ${positionsInWords(first.positions)}`;
+  if (places.length === 1)
+    return sharedCausesPlaces.stringStringNamePositions(first.stringName, positionsInWords(first.positions));
   const known = units.filter((u) => u.position !== null).length;
   const names =
     places.length <= 4
-      ? `strings ${listed(places.map((p) => p.stringName))}`
-      : counted(places.length, 'string');
-  return known > 0 ? `${names}, ${counted(known, 'unit')}` : names;
+      ? sharedCausesPlaces.stringsListedSaid(listed(places.map((p) => p.stringName)))
+      : sharedCausesPlaces.countedPlacesString(places.length);
+  return known > 0 ? `${names}, ${sharedCausesPlaces.countedKnownUnit(known)}` : names;
 }
 
 /** "Two units", "One string", "Two units and one string": what a cause concerns, to begin a sentence. */

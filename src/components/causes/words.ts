@@ -1,4 +1,5 @@
 import type { CauseNow } from '../../schemas/api/now';
+import { sharedCausesWords } from '../../words/shared-causes';
 
 /** Gravest first: the order of every list of causes. */
 export const GRAVITY: readonly CauseNow['verdict'][] = [
@@ -18,12 +19,9 @@ export const isHazard = (cause: Pick<CauseNow, 'verdict'>): boolean => cause.ver
 
 /** What to treat as live; null where the cause says nothing about live conductors. */
 export function treatAsLive(cause: Pick<CauseNow, 'verdict'>): string | null {
-  if (cause.verdict === 'not_shutting_down')
-    return 'Treat every string there as live until a rated meter at the home run shows otherwise.';
-  if (cause.verdict === 'unconfirmed')
-    return 'Nothing shows that these units followed the command. Treat their strings as live.';
-  if (cause.verdict === 'silent')
-    return "Whether these units follow a shutdown can't be confirmed until they are heard again.";
+  if (cause.verdict === 'not_shutting_down') return sharedCausesWords.treatEveryStringThere;
+  if (cause.verdict === 'unconfirmed') return sharedCausesWords.nothingShowsThatThese;
+  if (cause.verdict === 'silent') return sharedCausesWords.whetherTheseUnitsFollow;
   return null;
 }
 
@@ -40,5 +38,5 @@ export function alternativesInWords(alternatives: readonly string[]): string {
     /^([A-Z][a-z]|A )/.test(a) ? a.charAt(0).toLowerCase() + a.slice(1) : a,
   );
   const last = inside.pop() ?? '';
-  return inside.length === 0 ? last : `${inside.join(', ')} or ${last}`;
+  return inside.length === 0 ? last : sharedCausesWords.insideOrLast(inside.join(', '), last);
 }

@@ -1,20 +1,21 @@
 import { number } from '../../drawings/numbers';
 import { valueAt, type ChartModel } from './model';
 import { momentWords } from './options';
+import { chartTable } from '../../words/charts';
 
 /** The same figures as a table. */
 export function ChartTable({ model, height }: { model: ChartModel; height: number }) {
   const times = [...new Set(model.lines.flatMap((l) => l.at.filter((_, i) => l.values[i] !== null)))].sort(
     (a, b) => a - b,
   );
-  if (times.length === 0) return <p className="py-6 text-ink-2">Nothing was reported in this time.</p>;
+  if (times.length === 0) return <p className="py-6 text-ink-2">{chartTable.nothingWasReportedIn}</p>;
   return (
     <div
       className="overflow-auto"
       style={{ maxHeight: height }}
       tabIndex={0}
       role="region"
-      aria-label={`${model.title}, figures`}
+      aria-label={chartTable.modelFigures(model.title)}
     >
       <table className="w-full border-collapse text-right">
         <caption className="sr-only">
@@ -23,7 +24,7 @@ export function ChartTable({ model, height }: { model: ChartModel; height: numbe
         <thead className="sticky top-0 bg-sheet text-sm text-ink-2">
           <tr className="border-b border-rule">
             <th scope="col" className="py-1.5 pr-4 text-left font-medium">
-              Time
+              {chartTable.time}
             </th>
             {model.lines.map((line) => (
               <th key={line.name} scope="col" className="py-1.5 pl-3 font-medium">
@@ -53,9 +54,7 @@ export function ChartTable({ model, height }: { model: ChartModel; height: numbe
                 ))}
                 {model.band && (
                   <td className="py-1 pl-3 text-ink-2">
-                    {low === null || high === null
-                      ? '–'
-                      : `${number(low, model.digits)} to ${number(high, model.digits)}`}
+                    {low === null || high === null ? '–' : chartTable.lowToDigits(low, model.digits, high)}
                   </td>
                 )}
               </tr>

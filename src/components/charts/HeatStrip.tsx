@@ -14,6 +14,7 @@ import {
   type HeatModel,
 } from './heat';
 import { useWidth } from './near';
+import { heatStrip } from '../../words/charts';
 
 interface Props {
   model: HeatModel;
@@ -130,15 +131,16 @@ function draw(
 }
 
 function words(model: HeatModel, cell: HeatCell): string {
-  const value = cell.value === null ? 'nothing reported' : quantity(cell.value, model.unit, model.digits);
-  const share = cell.ratio === null ? '' : `, ${percent(cell.ratio)} of the string’s middle`;
-  return `${clock(cell.at * 1000, model.timeZone)}, position ${cell.position}: ${value}${share}`;
+  const value =
+    cell.value === null ? heatStrip.nothingReported : quantity(cell.value, model.unit, model.digits);
+  const share = cell.ratio === null ? '' : heatStrip.ofTheStringsMiddle(cell.ratio);
+  return heatStrip.atPositionPositionValue(cell.at, model.timeZone, cell.position, value, share);
 }
 
 function Legend({ model, range }: { model: HeatModel; range: [number, number] }) {
   const ends =
     model.scale === 'middle'
-      ? [`−${percent(RATIO_SPAN)} or less`, 'as the middle', `+${percent(RATIO_SPAN)}`]
+      ? [heatStrip.orLess(RATIO_SPAN), heatStrip.asTheMiddle, `+${percent(RATIO_SPAN)}`]
       : [quantity(range[0], model.unit), '', quantity(range[1], model.unit)];
   const ramp =
     model.scale === 'middle'
@@ -166,7 +168,7 @@ function Legend({ model, range }: { model: HeatModel; range: [number, number] })
             background: 'repeating-linear-gradient(135deg, var(--slate-wash) 0 3px, var(--sheet) 3px 4.5px)',
           }}
         />
-        nothing reported
+        {heatStrip.nothingReported}
       </span>
     </div>
   );
@@ -178,7 +180,7 @@ function HeatTable({ model }: { model: HeatModel }) {
       className="max-h-[380px] overflow-auto"
       tabIndex={0}
       role="region"
-      aria-label={`${model.title}, figures`}
+      aria-label={heatStrip.modelFigures(model.title)}
     >
       <table className="border-collapse text-right text-sm">
         <caption className="sr-only">
@@ -187,7 +189,7 @@ function HeatTable({ model }: { model: HeatModel }) {
         <thead className="sticky top-0 bg-sheet text-ink-2">
           <tr className="border-b border-rule">
             <th scope="col" className="py-1.5 pr-4 text-left font-medium">
-              Time
+              {heatStrip.time}
             </th>
             {model.rows.map((r) => (
               <th key={r.position} scope="col" className="px-2 py-1.5 font-medium">
@@ -275,13 +277,13 @@ export function HeatStrip({ model, least, moment = null, onChoose, csvHref }: Pr
       role="group"
       tabIndex={0}
       onKeyDown={onKeyDown}
-      aria-label={`${model.title}. Arrow keys move from cell to cell, Enter shows the staircase of that moment, t the figures as a table.`}
+      aria-label={heatStrip.arrowKeysMoveFrom(model.title)}
     >
       <div className="mb-2 flex flex-wrap items-center justify-between gap-x-4">
         <Legend model={model} range={range} />
         <div className="no-print -mr-2 flex items-center">
           <button type="button" className={TOOL} aria-pressed={asTable} onClick={() => setAsTable(!asTable)}>
-            {asTable ? 'Strip' : 'Table'}
+            {asTable ? heatStrip.strip : heatStrip.table}
           </button>
           <a href={csvHref} download className={TOOL}>
             CSV
@@ -307,7 +309,7 @@ export function HeatStrip({ model, least, moment = null, onChoose, csvHref }: Pr
         )}
       </div>
       <p role="status" className="min-h-[20px] text-sm text-ink-2">
-        {cell ? words(model, cell) : 'Point at a cell, or move with the arrow keys.'}
+        {cell ? words(model, cell) : heatStrip.pointAtACell}
       </p>
     </div>
   );

@@ -10,6 +10,7 @@ import { useNear, useWidth } from './near';
 import type { ChartModel } from './model';
 import { picture } from './picture';
 import { readout } from './options';
+import { timeChart } from '../../words/charts';
 
 const Canvas = lazy(() => import('./Canvas'));
 
@@ -122,7 +123,10 @@ export function TimeChart({
     <figure
       ref={figure}
       tabIndex={0}
-      aria-label={`${model.title}. Press t for the figures as a table, left and right for single values${onMoment ? ', Enter for the staircase of that moment' : ''}.`}
+      aria-label={timeChart.pressForTheFigures(
+        model.title,
+        onMoment ? ', Enter for the staircase of that moment' : '',
+      )}
       onKeyDown={onKeyDown}
       className="bg-sheet"
     >
@@ -131,23 +135,28 @@ export function TimeChart({
         <div className="no-print -mr-2 flex flex-wrap items-center">
           {!asTable && (
             <>
-              <button type="button" className={TOOL} aria-label="Zoom in" onClick={() => zoomBy(0.5)}>
+              <button
+                type="button"
+                className={TOOL}
+                aria-label={timeChart.zoomIn}
+                onClick={() => zoomBy(0.5)}
+              >
                 +
               </button>
-              <button type="button" className={TOOL} aria-label="Zoom out" onClick={() => zoomBy(2)}>
+              <button type="button" className={TOOL} aria-label={timeChart.zoomOut} onClick={() => zoomBy(2)}>
                 −
               </button>
               <button type="button" className={TOOL} onClick={() => zoomBy(null)}>
-                Whole
+                {timeChart.whole}
               </button>
             </>
           )}
           <button type="button" className={TOOL} aria-pressed={asTable} onClick={() => setAsTable(!asTable)}>
-            {asTable ? 'Curve' : 'Table'}
+            {asTable ? timeChart.curve : timeChart.table}
           </button>
           {!asTable && (
             <button type="button" className={TOOL} onClick={savePicture}>
-              PNG
+              {timeChart.png}
             </button>
           )}
           {csvHref ? (

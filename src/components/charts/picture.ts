@@ -1,6 +1,6 @@
 import type { ECharts } from 'echarts/core';
-import { fullTime } from '../../drawings/times';
 import type { ChartModel } from './model';
+import { chartsPicture } from '../../words/charts';
 
 const SCALE = 2;
 const HEAD = 44;
@@ -28,7 +28,7 @@ export async function picture(chart: ECharts, model: ChartModel, host: HTMLEleme
   pen.font = `600 ${15 * SCALE}px ${style.fontFamily}`;
   pen.fillText(model.title, 16 * SCALE, 24 * SCALE);
   pen.font = `${12 * SCALE}px ${style.fontFamily}`;
-  const time = `${fullTime(model.from * 1000, model.timeZone)} to ${fullTime(model.to * 1000, model.timeZone)}`;
+  const time = chartsPicture.fromToTimeZone(model.from, model.timeZone, model.to);
   pen.fillText(time, 16 * SCALE, 42 * SCALE);
   return canvas.toDataURL('image/png');
 }

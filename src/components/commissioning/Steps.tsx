@@ -1,14 +1,15 @@
 import type { StepKey } from '../../domain/commissioning/steps';
 import { paths } from '../../schemas/paths';
 import type { StepNow } from '../../schemas/api/commissioning';
+import { sharedCommissioningSteps } from '../../words/shared-commissioning';
 
 export const STEP_NAMES: Record<StepKey, string> = {
-  as_built: 'As-built',
-  install_checks: 'Install checks',
-  meter_readings: 'Meter readings',
-  roll_call: 'Roll call',
-  shutdown_test: 'Shutdown test',
-  handover: 'Handover',
+  as_built: sharedCommissioningSteps.asBuilt,
+  install_checks: sharedCommissioningSteps.installChecks,
+  meter_readings: sharedCommissioningSteps.meterReadings,
+  roll_call: sharedCommissioningSteps.rollCall,
+  shutdown_test: sharedCommissioningSteps.shutdownTest,
+  handover: sharedCommissioningSteps.handover,
 };
 
 /** Where each step is worked on. */
@@ -48,8 +49,16 @@ export function StepBox({ mark }: { mark: StepMark }) {
   );
 }
 
-export const STATE_MARK = { done: 'full', under_way: 'half', not_started: 'none' } as const;
-export const STATE_WORDS = { done: 'done', under_way: 'under way', not_started: 'not started' } as const;
+export const STATE_MARK = {
+  done: 'full',
+  under_way: 'half',
+  not_started: 'none',
+} as const;
+export const STATE_WORDS = {
+  done: sharedCommissioningSteps.done,
+  under_way: sharedCommissioningSteps.underWay,
+  not_started: sharedCommissioningSteps.notStarted,
+} as const;
 
 /** One step as a link to where it is worked on. */
 export function StepLink({
@@ -91,7 +100,7 @@ interface Props {
 /** The steps of a site as a column, each a link to where it is worked on; a row of them on narrow screens. */
 export function Steps({ site, steps, here }: Props) {
   return (
-    <nav aria-label="Steps of commissioning">
+    <nav aria-label={sharedCommissioningSteps.stepsOfCommissioning}>
       <ol className="grid grid-cols-2 gap-x-6 sm:grid-cols-3 xl:grid-cols-1">
         {steps.map((step) => {
           const current = step.key === here;

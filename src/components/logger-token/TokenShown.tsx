@@ -1,6 +1,7 @@
 import { useState } from 'react';
 import { paths } from '../../schemas/paths';
 import { Button } from '../ui/Button';
+import { tokenShown } from '../../words/logger-token';
 
 /** A logger's token, shown this once: only its hash is kept. */
 export function TokenShown({ token, onDone }: { token: string; onDone: () => void }) {
@@ -14,26 +15,26 @@ export function TokenShown({ token, onDone }: { token: string; onDone: () => voi
   return (
     <>
       <p className="mb-3">
-        <strong className="font-semibold">It is shown this once.</strong> Put it into the logger now, or keep
-        it where secrets are kept. If it is lost, make a new one.
+        <strong className="font-semibold">{tokenShown.itIsShownThis}</strong>
+        {tokenShown.putItIntoThe}
       </p>
-      <p className="mb-1 text-sm text-ink-2">Token</p>
+      <p className="mb-1 text-sm text-ink-2">{tokenShown.token}</p>
       <code className={`${box} select-all`}>{token}</code>
-      <p className="mb-1 mt-4 text-sm text-ink-2">The logger reports to</p>
+      <p className="mb-1 mt-4 text-sm text-ink-2">{tokenShown.theLoggerReportsTo}</p>
       <code className={box}>
         {here
           ? `${here.protocol === 'https:' ? 'wss' : 'ws'}://${here.host}${paths.ingest()}`
           : paths.ingest()}
       </code>
-      <p className="mb-1 mt-4 text-sm text-ink-2">or, where it has no WebSocket, in batches to</p>
+      <p className="mb-1 mt-4 text-sm text-ink-2">{tokenShown.orWhereItHas}</p>
       <code className={box}>{`${here?.origin ?? ''}${paths.api.v1Ingest()}`}</code>
       <div className="mt-4 flex flex-wrap gap-2">
         {typeof navigator !== 'undefined' && 'clipboard' in navigator && (
           <Button weight="primary" onClick={() => void copy()}>
-            {copied ? 'Copied' : 'Copy the token'}
+            {copied ? tokenShown.copied : tokenShown.copyTheToken}
           </Button>
         )}
-        <Button onClick={onDone}>I have it</Button>
+        <Button onClick={onDone}>{tokenShown.iHaveIt}</Button>
       </div>
     </>
   );

@@ -2,6 +2,7 @@ import { useId, type ReactNode } from 'react';
 import { Button } from '../ui/Button';
 import { Notice } from '../ui/Notice';
 import { ApiError } from '../../lib/api';
+import { confirm } from '../../words/placements';
 
 export interface Confirmed {
   seen: string;
@@ -14,11 +15,9 @@ export type ConfirmFaults = Partial<Record<keyof Confirmed, string>>;
 /** What is still missing before a change may be written. */
 export function confirmFaults(value: Confirmed): ConfirmFaults {
   return {
-    ...(value.seen.trim().length < 3
-      ? { seen: 'Say what you read or saw on the module: its label, its place.' }
-      : {}),
-    ...(value.reason.trim().length < 3 ? { reason: 'Say why this changes. It stays in the history.' } : {}),
-    ...(value.checked ? {} : { checked: 'Confirm that the labels were read on the roof.' }),
+    ...(value.seen.trim().length < 3 ? { seen: confirm.sayWhatYouRead } : {}),
+    ...(value.reason.trim().length < 3 ? { reason: confirm.sayWhyThisChanges } : {}),
+    ...(value.checked ? {} : { checked: confirm.confirmThatTheLabels }),
   };
 }
 
@@ -74,15 +73,15 @@ export function Confirm({ value, onChange, faults, check, submit, pending, error
   return (
     <>
       <Area
-        label="What you read on the module"
-        hint="The label as it stands there, and where: “label reads …78B, upper row, second from the gable”."
+        label={confirm.whatYouReadOn}
+        hint={confirm.theLabelAsIt}
         value={value.seen}
         onChange={(seen) => onChange({ ...value, seen })}
         error={faults.seen}
       />
       <Area
-        label="Why"
-        hint="It stays in the history."
+        label={confirm.why}
+        hint={confirm.itStaysInThe}
         value={value.reason}
         onChange={(reason) => onChange({ ...value, reason })}
         error={faults.reason}
@@ -105,15 +104,15 @@ export function Confirm({ value, onChange, faults, check, submit, pending, error
         )}
       </div>
       {error && (
-        <Notice kind="failed" title={error instanceof ApiError ? error.title : 'It did not work'}>
+        <Notice kind="failed" title={error instanceof ApiError ? error.title : confirm.itDidNotWork}>
           {error.message}
         </Notice>
       )}
       <div className="flex flex-wrap gap-2">
         <Button type="submit" weight="primary" disabled={pending} className="flex-1">
-          {pending ? 'Writing …' : submit}
+          {pending ? confirm.writing : submit}
         </Button>
-        <Button onClick={onCancel}>Cancel</Button>
+        <Button onClick={onCancel}>{confirm.cancel}</Button>
       </div>
     </>
   );

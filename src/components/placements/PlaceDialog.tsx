@@ -11,6 +11,7 @@ import { SlotPicker } from './SlotPicker';
 import { nameOf, seatAt, type SlotRef } from './evidence';
 import { suggestedFor } from './suggestions';
 import { usePlacing } from './use-placing';
+import { placeDialog } from '../../words/placements';
 
 interface Props {
   siteId: string;
@@ -36,14 +37,11 @@ function Suggestions({
 }) {
   if (list.length === 0)
     return (
-      <p className="border border-dashed border-rule p-3 text-ink-2">
-        Nothing says where it sits: no string of its gateway lacks a unit, and no serial here is near to it.
-        It may be a spare, or a neighbour’s.
-      </p>
+      <p className="border border-dashed border-rule p-3 text-ink-2">{placeDialog.nothingSaysWhereIt}</p>
     );
   return (
     <div>
-      <p className="mb-1 font-medium">What speaks for a place</p>
+      <p className="mb-1 font-medium">{placeDialog.whatSpeaksForA}</p>
       <ul>
         {list.slice(0, SHOWN).map((s) => (
           <li
@@ -53,8 +51,10 @@ function Suggestions({
             <div className="min-w-0">
               <p className="font-semibold">
                 {s.stringName}
-                {s.position !== null && `, position ${s.position}`}
-                {s.position === null && <span className="font-normal text-ink-2"> (position not known)</span>}
+                {s.position !== null && placeDialog.positionPosition(s.position)}
+                {s.position === null && (
+                  <span className="font-normal text-ink-2">{placeDialog.positionNotKnown}</span>
+                )}
               </p>
               <ul className="list-disc pl-4 text-sm text-ink-2">
                 {s.reasons.map((r) => (
@@ -68,7 +68,7 @@ function Suggestions({
               aria-pressed={taken?.stringId === s.stringId}
               onClick={() => onTake({ stringId: s.stringId, position: s.position ?? 0 })}
             >
-              Take {s.stringName}
+              {placeDialog.takeStringName(s.stringName)}
             </button>
           </li>
         ))}
@@ -97,8 +97,8 @@ export function PlaceDialog({ siteId, strings, answers, stranger, slot, onClose,
     event.preventDefault();
     const missing = {
       ...confirmFaults(confirmed),
-      ...(seat ? {} : { slot: 'Choose the string and the position where the module lies.' }),
-      ...(serial.length < 4 ? { serial: 'Type the serial of the new unit as its label has it.' } : {}),
+      ...(seat ? {} : { slot: placeDialog.chooseTheStringAnd }),
+      ...(serial.length < 4 ? { serial: placeDialog.typeTheSerialOf } : {}),
     };
     setFaults(missing);
     if (Object.keys(missing).length > 0 || !seat) return;
@@ -110,22 +110,22 @@ export function PlaceDialog({ siteId, strings, answers, stranger, slot, onClose,
       checked: true,
     });
   };
-  const title = stranger ? `Place ${stranger.serial}` : 'Replace a unit';
+  const title = stranger ? placeDialog.placeSerial(stranger.serial) : placeDialog.replaceAUnit;
   return (
     <Dialog open title={title} onClose={onClose}>
       <form onSubmit={submit} noValidate className="grid gap-4">
         {stranger ? (
           <>
             <p className="text-ink-2">
-              Heard by {stranger.gateway}
-              {stranger.signal !== null && `, ${decibelMilliwatts(stranger.signal)}`}. Where it lies only its
-              label on the roof says.
+              {placeDialog.heardBy(stranger.gateway)}
+              {stranger.signal !== null && `, ${decibelMilliwatts(stranger.signal)}`}
+              {placeDialog.whereItLiesOnly}
             </p>
             <Suggestions list={suggestions} taken={ref} onTake={setRef} />
           </>
         ) : (
           <Field
-            label="Serial of the new unit"
+            label={placeDialog.serialOfTheNew}
             name="serial"
             value={typed}
             onChange={(e) => setTyped(e.target.value)}
@@ -133,11 +133,11 @@ export function PlaceDialog({ siteId, strings, answers, stranger, slot, onClose,
             autoComplete="off"
             spellCheck={false}
             error={faults.serial}
-            hint="As its label has it. The old unit’s life stays in the history."
+            hint={placeDialog.asItsLabelHas}
           />
         )}
         <SlotPicker
-          label="Where it lies"
+          label={placeDialog.whereItLies}
           strings={strings}
           value={ref}
           onChange={setRef}
@@ -150,19 +150,11 @@ export function PlaceDialog({ siteId, strings, answers, stranger, slot, onClose,
             className={`border p-3 ${oldHeard ? 'border-rust bg-rust-wash text-rust-ink' : 'border-rule-faint'}`}
           >
             {old === null ? (
-              <>
-                {nameOf(seat)} has no unit on the as-built. {seat.slot.roofPlace}
-              </>
+              <>{placeDialog.hasNoUnitOn(nameOf(seat), seat.slot.roofPlace)}</>
             ) : oldHeard ? (
-              <>
-                {nameOf(seat)} has {old}, which answers from somewhere on this roof. If it lies elsewhere,
-                exchange the two instead.
-              </>
+              <>{placeDialog.hasWhichAnswersFrom(nameOf(seat), old)}</>
             ) : (
-              <>
-                {nameOf(seat)} has {old}, which nobody has heard. It is taken out of the slot, and stays in
-                the history. {seat.slot.roofPlace}
-              </>
+              <>{placeDialog.hasWhichNobodyHas(nameOf(seat), old, seat.slot.roofPlace)}</>
             )}
           </p>
         )}
@@ -170,15 +162,11 @@ export function PlaceDialog({ siteId, strings, answers, stranger, slot, onClose,
           value={confirmed}
           onChange={setConfirmed}
           faults={faults}
-          check={
-            serial.length >= 4
-              ? `I have read ${serial} on the label of the module at this place.`
-              : 'I have read this serial on the label of the module at this place.'
-          }
+          check={serial.length >= 4 ? placeDialog.haveReadOnThe(serial) : placeDialog.iHaveReadThis}
           submit={
             old === null
-              ? `Place it${seat ? ` at ${nameOf(seat)}` : ''}`
-              : `Replace ${old}${seat ? ` at ${nameOf(seat)}` : ''}`
+              ? placeDialog.placeIt(seat ? ` at ${nameOf(seat)}` : '')
+              : placeDialog.replaceOldSeat(old, seat ? ` at ${nameOf(seat)}` : '')
           }
           pending={placing.isPending}
           error={placing.error}

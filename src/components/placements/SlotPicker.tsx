@@ -1,6 +1,7 @@
 import { useId } from 'react';
 import type { StringNow } from '../../schemas/api/now';
 import { slotLabel, type SlotRef } from './evidence';
+import { slotPicker } from '../../words/placements';
 
 const SELECT = 'min-h-[44px] w-full rounded border border-rule bg-sheet px-2.5 text-[16px] text-ink';
 
@@ -32,12 +33,12 @@ export function SlotPicker({ label, strings, value, onChange, heard = null, isOp
       <legend className="mb-1 font-medium">{label}</legend>
       <div className="grid grid-cols-[110px_minmax(0,1fr)] gap-2">
         <select
-          aria-label={`${label}: string`}
+          aria-label={slotPicker.labelString(label)}
           className={SELECT}
           value={value?.stringId ?? ''}
           onChange={(e) => onChange(e.target.value ? { stringId: e.target.value, position: 0 } : null)}
         >
-          <option value="">String</option>
+          <option value="">{slotPicker.string}</option>
           {strings.map((s) => (
             <option key={s.id} value={s.id}>
               {s.name}
@@ -45,17 +46,17 @@ export function SlotPicker({ label, strings, value, onChange, heard = null, isOp
           ))}
         </select>
         <select
-          aria-label={`${label}: position`}
+          aria-label={slotPicker.labelPosition(label)}
           className={SELECT}
           disabled={!string}
           value={value?.position ?? 0}
           onChange={(e) => value && onChange({ ...value, position: Number(e.target.value) })}
         >
-          <option value={0}>Position, from −</option>
+          <option value={0}>{slotPicker.positionFrom}</option>
           {open.length > 0 ? (
             <>
-              <optgroup label="Without a unit that is heard">{open.map(option)}</optgroup>
-              <optgroup label="Replacing a unit that is heard">{others.map(option)}</optgroup>
+              <optgroup label={slotPicker.withoutAUnitThat}>{open.map(option)}</optgroup>
+              <optgroup label={slotPicker.replacingAUnitThat}>{others.map(option)}</optgroup>
             </>
           ) : (
             others.map(option)

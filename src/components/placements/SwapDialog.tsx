@@ -1,12 +1,13 @@
 import { useState, type SubmitEvent } from 'react';
 import { Dialog } from '../ui/Dialog';
-import { amperes, percent } from '../../drawings/numbers';
+import { amperes } from '../../drawings/numbers';
 import type { StringNow } from '../../schemas/api/now';
 import type { PlaceBody } from '../../schemas/api/placing';
 import { Confirm, UNCONFIRMED, confirmFaults, type ConfirmFaults } from './Confirm';
 import { SlotPicker } from './SlotPicker';
 import { apart, nameOf, seatAt, typicalCurrent, type Seat, type SlotRef } from './evidence';
 import { usePlacing } from './use-placing';
+import { swapDialog } from '../../words/placements';
 
 interface Props {
   siteId: string;
@@ -18,7 +19,7 @@ interface Props {
 }
 
 const apartWords = (share: number | null): string =>
-  share === null ? 'no current to compare' : `${percent(share, 1)} from its string`;
+  share === null ? swapDialog.noCurrentToCompare : swapDialog.fromItsString(share);
 
 /** One slot of the two: who stands there, who would, and what their currents say of either. */
 function Side({ seat, other }: { seat: Seat; other: Seat }) {
@@ -27,7 +28,7 @@ function Side({ seat, other }: { seat: Seat; other: Seat }) {
     <div>
       <dt className="text-xs text-ink-2">{head}</dt>
       <dd>
-        <span className="block font-medium">{slot.serial ?? 'no unit'}</span>
+        <span className="block font-medium">{slot.serial ?? swapDialog.noUnit}</span>
         {slot.serial !== null && (
           <span className="block text-sm text-ink-2">
             {amperes(slot.current)}, {apartWords(apart(slot.current, typical))}
@@ -40,11 +41,11 @@ function Side({ seat, other }: { seat: Seat; other: Seat }) {
     <div className="min-w-0 border border-rule p-3">
       <p className="font-semibold">{nameOf(seat)}</p>
       <p className="mb-2 text-sm text-ink-2">
-        {seat.slot.roofPlace || 'place not recorded'}; {seat.string.name} carries {amperes(typical)}
+        {swapDialog.roofPlaceWhichCarriesTypical(seat.slot.roofPlace, seat.string.name, typical)}
       </p>
       <dl className="grid gap-2">
-        {line(seat.slot, 'Now on the as-built')}
-        {line(other.slot, 'After the change')}
+        {line(seat.slot, swapDialog.nowOnTheAs)}
+        {line(other.slot, swapDialog.afterTheChange)}
       </dl>
     </div>
   );
@@ -65,10 +66,10 @@ function swapBody(one: Seat, two: Seat): Pick<PlaceBody, 'kind' | 'slots'> {
 }
 
 function slotFault(one: Seat | null, two: Seat | null): string | null {
-  if (!one || !two) return 'Choose a string and a position for both.';
+  if (!one || !two) return swapDialog.chooseAStringAnd;
   if (one.string.id === two.string.id && one.slot.position === two.slot.position)
-    return 'Choose two different slots.';
-  if (one.slot.serial === null && two.slot.serial === null) return 'Neither slot has a unit.';
+    return swapDialog.chooseTwoDifferentSlots;
+  if (one.slot.serial === null && two.slot.serial === null) return swapDialog.neitherSlotHasA;
   return null;
 }
 
@@ -97,13 +98,17 @@ export function SwapDialog({ siteId, strings, first, second, onClose, onDone }: 
     });
   };
   return (
-    <Dialog open title="Exchange two units on the as-built" onClose={onClose}>
+    <Dialog open title={swapDialog.exchangeTwoUnitsOn} onClose={onClose}>
       <form onSubmit={submit} noValidate className="grid gap-4">
-        <p className="text-ink-2">
-          This changes the drawing, not the roof. Go there first: read both labels where the modules lie.
-        </p>
-        <SlotPicker label="One slot" strings={strings} value={a} onChange={setA} error={faults.slots} />
-        <SlotPicker label="The other slot" strings={strings} value={b} onChange={setB} />
+        <p className="text-ink-2">{swapDialog.thisChangesTheDrawing}</p>
+        <SlotPicker
+          label={swapDialog.oneSlot}
+          strings={strings}
+          value={a}
+          onChange={setA}
+          error={faults.slots}
+        />
+        <SlotPicker label={swapDialog.theOtherSlot} strings={strings} value={b} onChange={setB} />
         {both && (
           <div className="grid gap-3 sm:grid-cols-2">
             <Side seat={both.one} other={both.two} />
@@ -114,8 +119,8 @@ export function SwapDialog({ siteId, strings, first, second, onClose, onDone }: 
           value={confirmed}
           onChange={setConfirmed}
           faults={faults}
-          check="I have read both labels on the roof, and they stand as this change says."
-          submit={moves ? 'Move the unit' : 'Exchange the two units'}
+          check={swapDialog.iHaveReadBoth}
+          submit={moves ? swapDialog.moveTheUnit : swapDialog.exchangeTheTwoUnits}
           pending={placing.isPending}
           error={placing.error}
           onCancel={onClose}

@@ -1,5 +1,6 @@
 import { median } from '../../domain/output/robust';
 import type { SlotNow, StringNow } from '../../schemas/api/now';
+import { placementsEvidence } from '../../words/placements';
 
 /** What the newest reports say of a unit in a slot, and of the string that the slot belongs to. Amperes. */
 
@@ -39,7 +40,7 @@ export const nameOf = ({ string, slot }: Seat): string => `${string.name}-${slot
 
 /** How a slot is named in a list to choose from: what stands there and whether anybody hears it. */
 export function slotLabel(slot: SlotNow, heard: ReadonlySet<string> | null): string {
-  if (slot.serial === null) return `${slot.position} · no unit`;
+  if (slot.serial === null) return placementsEvidence.noUnit(slot.position);
   const unheard = heard ? !heard.has(slot.serial) : slot.state === 'unheard';
-  return `${slot.position} · ${slot.serial}${unheard ? ', unheard' : slot.state === 'silent' ? ', silent' : ''}`;
+  return `${slot.position} · ${slot.serial}${unheard ? placementsEvidence.unheard : slot.state === 'silent' ? placementsEvidence.silent : ''}`;
 }

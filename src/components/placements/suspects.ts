@@ -1,5 +1,6 @@
-import { listed, percent } from '../../drawings/numbers';
+import { listed } from '../../drawings/numbers';
 import type { MembershipSuspect } from '../../schemas/api/membership';
+import { placementsSuspects } from '../../words/placements';
 
 /** Units whose current is another string's: in pairs where two look exchanged, and in words. */
 
@@ -21,14 +22,21 @@ export function groupsOf(suspects: readonly MembershipSuspect[]): [MembershipSus
 /** "each carries the other string's current (0.4 % apart over 22 reports, against 6 % from its own)". */
 export function suspectWords([a, b]: [MembershipSuspect, MembershipSuspect?]): string {
   if (a.outcome === 'fits_none')
-    return `${unitName(a)} carries the current of no string here (${percent(a.apartOwn, 1)} from its own over ${a.steps} reports). Its measurement may be wrong.`;
+    return placementsSuspects.carriesTheCurrentOf(unitName(a), a.apartOwn, a.steps);
   const figures = (s: MembershipSuspect) =>
-    `${percent(s.apartOther, 1)} apart over ${s.steps} reports, against ${percent(s.apartOwn, 1)} from its own`;
+    placementsSuspects.apartOverReportsAgainst(s.apartOther, s.steps, s.apartOwn);
   const certain = a.outcome === 'elsewhere' && (!b || b.outcome === 'elsewhere');
-  const alike = certain ? '' : ' Other strings fit alike: only isolating one decides.';
+  const alike = certain ? '' : placementsSuspects.otherStringsFitAlike;
   if (b)
-    return `${unitName(a)} and ${unitName(b)} ${certain ? 'look' : 'may be'} exchanged: each carries a current like the other string’s (${figures(a)}; ${figures(b)}).${alike}`;
+    return placementsSuspects.andExchangedEachCarries(
+      unitName(a),
+      unitName(b),
+      certain,
+      figures(a),
+      figures(b),
+      alike,
+    );
   return a.outcome === 'elsewhere'
-    ? `${unitName(a)} carries the current of ${a.otherString} (${figures(a)}). Which unit belongs there the currents don’t say.`
-    : `${unitName(a)} does not carry the current of ${a.string} (${percent(a.apartOwn, 1)} apart over ${a.steps} reports). ${listed(a.undecidedWith)} and maybe others fit alike: only isolating a string decides.`;
+    ? placementsSuspects.carriesTheCurrentOfWhich(unitName(a), a.otherString, figures(a))
+    : placementsSuspects.doesNotCarryThe(unitName(a), a.string, a.apartOwn, a.steps, listed(a.undecidedWith));
 }

@@ -7,6 +7,7 @@ import { likelyComb } from './likely-comb';
 import { PAINT } from './paint';
 import type { Faults } from './form';
 import { chance, helpWords, hueOf, initiatorWords, outcomeWords, reasoning, shownHypotheses } from './words';
+import { answerSheet } from '../../words/shared-readings';
 
 interface Props {
   answer: Interpretation | null;
@@ -21,13 +22,10 @@ export function AnswerSheet({ answer, question, waiting, faults }: Props) {
     return (
       <Sheet id="answer">
         <h2 className="text-[15px] font-semibold">
-          {waiting ? 'Type what the meter shows between + and −' : 'Something has to be put right first'}
+          {waiting ? answerSheet.typeWhatTheMeter : answerSheet.somethingHasToBe}
         </h2>
         {waiting ? (
-          <p className="mt-1 text-ink-2">
-            What it can mean is worked out at once, here in the browser. A negative reading is a finding, not
-            a mistake.
-          </p>
+          <p className="mt-1 text-ink-2">{answerSheet.whatItCanMean}</p>
         ) : (
           <ul className="mt-1 list-disc pl-5 text-rust-ink">
             {Object.entries(faults).map(([key, fault]) => (
@@ -42,7 +40,7 @@ export function AnswerSheet({ answer, question, waiting, faults }: Props) {
   return (
     <Sheet id="answer">
       <h2 className="mb-3 flex flex-wrap items-center gap-2">
-        <span className="sr-only">What it means: </span>
+        <span className="sr-only">{answerSheet.whatItMeans}</span>
         <Tag tone={toneOf(answer, question)}>{outcomeWords(answer)}</Tag>
       </h2>
       <p role="status" className="sr-only">
@@ -67,35 +65,33 @@ export function AnswerSheet({ answer, question, waiting, faults }: Props) {
               </div>
             )}
             {h.asExpected && h !== best && (
-              <p className="mt-0.5 text-sm text-ink-2">This is what was expected.</p>
+              <p className="mt-0.5 text-sm text-ink-2">{answerSheet.thisIsWhatWas}</p>
             )}
           </li>
         ))}
       </ol>
       {shown.some(({ comb }) => comb) && (
-        <p className="mt-2 text-sm text-ink-2">
-          The bars stand for the units: how many, not which. A meter tells no positions.
-        </p>
+        <p className="mt-2 text-sm text-ink-2">{answerSheet.theBarsStandFor}</p>
       )}
       <p className="mt-3 text-[15px] leading-[21px] text-ink-2">{reasoning(answer, question).join(' ')}</p>
       {answer.earth && (
         <div className="mt-4 border-t border-rule-faint pt-3">
-          <h3 className="font-semibold">Readings to earth</h3>
+          <h3 className="font-semibold">{answerSheet.readingsToEarth}</h3>
           <p className={answer.earth.outcome === 'fault' ? 'font-medium text-rust-ink' : 'text-ink-2'}>
             {answer.earth.words}{' '}
             {answer.earth.outcome === 'no_fault_seen'
               ? ''
-              : `Chance of a fault to earth: ${chance(answer.earth.probability)}.`}
+              : answerSheet.chanceOfFaultTo(chance(answer.earth.probability))}
           </p>
         </div>
       )}
       <div className="mt-4 border-t border-rule-faint pt-3">
-        <h3 className="font-semibold">Does it follow the initiator?</h3>
+        <h3 className="font-semibold">{answerSheet.doesItFollowThe}</h3>
         <p className="text-ink-2">{initiatorWords(answer, question)}</p>
       </div>
       {answer.helped.length > 0 && (
         <div className="mt-3 border-t border-rule-faint pt-3">
-          <h3 className="font-semibold">What each thing known brought</h3>
+          <h3 className="font-semibold">{answerSheet.whatEachThingKnown}</h3>
           <ul className="text-ink-2">
             {answer.helped.map((help) => {
               const { name, words } = helpWords(help);

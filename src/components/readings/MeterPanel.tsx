@@ -14,6 +14,7 @@ import {
   type Place,
 } from './form';
 import { LIGHT_LABELS, METER_LABELS, PLACE_LABELS, commandedLabels } from './words';
+import { meterPanel } from '../../words/shared-readings';
 
 interface Props extends PanelProps {
   place: Place;
@@ -45,7 +46,7 @@ export function MeterPanel({
       <Segmented
         look="bold"
         name="at"
-        label="Kind of reading"
+        label={meterPanel.kindOfReading}
         value={place}
         options={PLACES.map((value) => ({ value, label: PLACE_LABELS[value] }))}
         onChange={(at) => choose({ at })}
@@ -54,7 +55,7 @@ export function MeterPanel({
         <Segmented
           look="bold"
           name="commanded"
-          label={tells ? 'What is commanded' : 'Keep-alive'}
+          label={tells ? meterPanel.whatIsCommanded : meterPanel.keepAlive}
           value={chosen(COMMANDED, form.commanded, 'unknown')}
           options={COMMANDED.map((value) => ({ value, label: commanded[value] }))}
           onChange={(value) => choose({ commanded: value })}
@@ -62,7 +63,7 @@ export function MeterPanel({
         <Segmented
           look="bold"
           name="light"
-          label="Light on the modules"
+          label={meterPanel.lightOnTheModules}
           value={chosen(LIGHTS, form.light, 'bright')}
           options={LIGHTS.map((value) => ({ value, label: LIGHT_LABELS[value] }))}
           onChange={(light) => choose({ light })}
@@ -71,21 +72,21 @@ export function MeterPanel({
       </div>
       {tells && asks.heard && (
         <Field
-          label="Units that have answered the roll call"
+          label={meterPanel.unitsThatHaveAnswered}
           name="heard"
           inputMode="numeric"
           autoComplete="off"
           className="max-w-[320px] pt-1"
           value={form.heard}
           error={faults.heard}
-          hint="A unit that nothing has spoken to yet passes its module's full voltage."
+          hint={meterPanel.aUnitThatNothing}
           onChange={(event) => typed({ heard: event.target.value })}
         />
       )}
       <div className="flex items-end gap-2 border-b-[3px] border-ink pb-1.5 pt-2">
         <button
           type="button"
-          aria-label="Change the sign"
+          aria-label={meterPanel.changeTheSign}
           onClick={() => key('sign')}
           className="h-[48px] w-[48px] shrink-0 rounded border border-rule bg-sheet text-2xl"
         >
@@ -93,7 +94,7 @@ export function MeterPanel({
         </button>
         <button
           type="button"
-          aria-label="Number pad"
+          aria-label={meterPanel.numberPad}
           aria-expanded={pad}
           onClick={() => setPad(!pad)}
           className="h-[48px] w-[48px] shrink-0 rounded border border-rule bg-sheet lg:hidden"
@@ -101,7 +102,7 @@ export function MeterPanel({
           <PadMark />
         </button>
         <label htmlFor="reading-volts" className="sr-only">
-          {`Reading ${PLACE_LABELS[place]}, volts`}
+          {meterPanel.readingVolts(PLACE_LABELS[place])}
         </label>
         <input
           id="reading-volts"
@@ -157,7 +158,7 @@ export function MeterInput({ value, onChange }: { value: string; onChange: (mete
     <Segmented
       look="bold"
       name="meter"
-      label="Meter input"
+      label={meterPanel.meterInput}
       value={chosen(METERS, value, 'high_impedance')}
       options={METERS.map((mode) => ({ value: mode, label: METER_LABELS[mode] }))}
       onChange={onChange}

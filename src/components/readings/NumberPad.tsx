@@ -1,3 +1,4 @@
+import { numberPad } from '../../words/shared-readings';
 const DIGITS = ['1', '2', '3', '4', '5', '6', '7', '8', '9'] as const;
 const KEY = 'min-h-[48px] rounded border border-rule bg-sheet text-[20px] font-medium active:bg-petrol-wash';
 
@@ -8,9 +9,14 @@ interface Props {
 }
 
 /** Numbers under one thumb; hidden where there is a keyboard. */
-export function NumberPad({ onKey, doneWords = 'Done', onDone }: Props) {
+export function NumberPad({ onKey, doneWords = numberPad.done, onDone }: Props) {
   return (
-    <div role="group" aria-label="Number pad" data-pad className="grid grid-cols-4 gap-1.5 pt-1 lg:hidden">
+    <div
+      role="group"
+      aria-label={numberPad.numberPad}
+      data-pad
+      className="grid grid-cols-4 gap-1.5 pt-1 lg:hidden"
+    >
       {DIGITS.map((digit, i) => (
         <button
           key={digit}
@@ -27,7 +33,7 @@ export function NumberPad({ onKey, doneWords = 'Done', onDone }: Props) {
         className={KEY}
         style={{ gridColumn: 1, gridRow: 4 }}
         onClick={() => onKey('.')}
-        aria-label="Decimal point"
+        aria-label={numberPad.decimalPoint}
       >
         .
       </button>
@@ -44,7 +50,7 @@ export function NumberPad({ onKey, doneWords = 'Done', onDone }: Props) {
         className={KEY}
         style={{ gridColumn: 4, gridRow: 1 }}
         onClick={() => onKey('back')}
-        aria-label="Delete the last digit"
+        aria-label={numberPad.deleteTheLastDigit}
       >
         ⌫
       </button>
@@ -54,7 +60,7 @@ export function NumberPad({ onKey, doneWords = 'Done', onDone }: Props) {
         style={{ gridColumn: 4, gridRow: '2 / 4' }}
         onClick={() => onKey('clear')}
       >
-        Clear
+        {numberPad.clear}
       </button>
       <button
         type="button"

@@ -1,5 +1,7 @@
 import { useEffect, useState, useSyncExternalStore } from 'react';
 import { Button } from '../ui/Button';
+import { readAloud } from '../../words/shared-readings';
+import { LOCALE } from '../../words/language';
 
 /** What the device can do does not change; the server has neither. */
 const never = () => () => undefined;
@@ -34,11 +36,11 @@ export function ReadAloud({ text, link = true }: Props) {
       return;
     }
     const words = new SpeechSynthesisUtterance(text);
-    words.lang = 'en-GB';
+    words.lang = LOCALE;
     words.onend = () => setSpeaking(false);
     words.onerror = () => {
       setSpeaking(false);
-      setNote('This device has no voice for it.');
+      setNote(readAloud.thisDeviceHasNo);
     };
     setNote('');
     setSpeaking(true);
@@ -46,20 +48,20 @@ export function ReadAloud({ text, link = true }: Props) {
   };
   const copy = () => {
     navigator.clipboard.writeText(window.location.href).then(
-      () => setNote('The link is copied.'),
-      () => setNote('The browser does not let us copy: take the address from its bar.'),
+      () => setNote(readAloud.theLinkIsCopied),
+      () => setNote(readAloud.theBrowserDoesNot),
     );
   };
   return (
     <div className="no-print flex flex-wrap items-center gap-2">
       {speaks && (
         <Button onClick={speak} aria-pressed={speaking} className="min-h-[44px] flex-1 sm:flex-none">
-          {speaking ? 'Stop reading' : 'Read it aloud'}
+          {speaking ? readAloud.stopReading : readAloud.readItAloud}
         </Button>
       )}
       {copies && (
         <Button onClick={copy} className="min-h-[44px] flex-1 sm:flex-none">
-          Copy the link
+          {readAloud.copyTheLink}
         </Button>
       )}
       <p role="status" className="text-sm text-ink-2">

@@ -3,6 +3,7 @@ import type { ReadingQuestion } from '../../domain/readings/reading';
 import { PAINT } from './paint';
 import { scaleOf } from './scale';
 import { expectedWords } from './words';
+import { readingScale } from '../../words/shared-readings';
 
 const share = (at: number): string => `${(100 * at).toFixed(2)}%`;
 /** Near an edge a label hangs inwards. */
@@ -52,7 +53,7 @@ export function ReadingScale({ answer, question }: { answer: Interpretation; que
       </div>
       <figcaption className="mt-1 flex flex-wrap justify-between gap-x-4 text-xs text-ink-2">
         <span>{scale.step}</span>
-        {expected && <span className="text-ink">expected: {expected.words}</span>}
+        {expected && <span className="text-ink">{readingScale.expectedExpected(expected.words)}</span>}
       </figcaption>
     </figure>
   );

@@ -8,6 +8,7 @@ import {
 } from '../../domain/readings/reading';
 import { typedNumber, type NumberRange } from '../../schemas/typed-number';
 import { SHEET_KEYS, SHEETS, type SheetKey } from './sheets';
+import { sharedReadingsForm } from '../../words/shared-readings';
 
 /**
  * What a person has entered, as typed: kept whole in the address, so that it can be sent, gone back to, and corrected
@@ -172,20 +173,30 @@ export function readForm(form: ReadingForm, known?: KnownString): Read {
     (form[key] ?? '').trim() === '' ? null : number(key, form[key] ?? '', name, range);
 
   const unitType = known?.unitType ?? UNIT_PRESETS[chosen(UNIT_KINDS, form.kind, 'shutdown_only')];
-  const units = known?.units ?? number('units', form.units, 'Units in the string', RANGES.units);
+  const units =
+    known?.units ?? number('units', form.units, sharedReadingsForm.unitsInTheString, RANGES.units);
   const module = known?.module ?? readModule(form, number);
   const tells = unitType.kind !== 'shutdown_only';
   const heard = tells
-    ? number('heard', form.heard, 'Units that have answered', { min: 0, max: units ?? 63, whole: true })
+    ? number('heard', form.heard, sharedReadingsForm.unitsThatHaveAnswered, {
+        min: 0,
+        max: units ?? 63,
+        whole: true,
+      })
     : 0;
-  const voltageV = optional('v', 'Reading + to −', RANGES.volts);
-  const positiveV = optional('pe', 'Reading + to earth', RANGES.volts);
-  const negativeV = optional('ne', 'Reading − to earth', RANGES.volts);
+  const voltageV = optional('v', sharedReadingsForm.readingTo, RANGES.volts);
+  const positiveV = optional('pe', sharedReadingsForm.readingToEarth, RANGES.volts);
+  const negativeV = optional('ne', sharedReadingsForm.readingToEarth2, RANGES.volts);
   const conditions = readConditions(optional, faults);
   const siblings = othersOf(form.others).flatMap((other, i): SiblingReading[] => {
     if (other.units.trim() === '' && other.volts.trim() === '') return [];
-    const its = number(`others.${i}.units`, other.units, 'Units of the other string', RANGES.units);
-    const volts = number(`others.${i}.volts`, other.volts, 'Reading of the other string', RANGES.volts);
+    const its = number(`others.${i}.units`, other.units, sharedReadingsForm.unitsOfTheOther, RANGES.units);
+    const volts = number(
+      `others.${i}.volts`,
+      other.volts,
+      sharedReadingsForm.readingOfTheOther,
+      RANGES.volts,
+    );
     return its === null || volts === null ? [] : [{ units: its, voltageV: volts }];
   });
   const wrong = Object.keys(faults).length > 0;
@@ -216,15 +227,15 @@ type ReadNumber = (key: string, text: string, name: string, range: NumberRange) 
 function readModule(form: ReadingForm, number: ReadNumber): ModuleType | null {
   const key = SHEET_KEYS.find((k): k is SheetKey => k === form.module);
   if (key) return SHEETS[key];
-  const voc = number('voc', form.voc, 'Open-circuit voltage', RANGES.voc);
-  const beta = number('beta', form.beta, 'Temperature coefficient', RANGES.beta);
-  const cells = number('cells', form.cells, 'Cells in series', RANGES.cells);
-  const groups = number('groups', form.groups, 'Bypass diodes', RANGES.groups);
+  const voc = number('voc', form.voc, sharedReadingsForm.openCircuitVoltage, RANGES.voc);
+  const beta = number('beta', form.beta, sharedReadingsForm.temperatureCoefficient, RANGES.beta);
+  const cells = number('cells', form.cells, sharedReadingsForm.cellsInSeries, RANGES.cells);
+  const groups = number('groups', form.groups, sharedReadingsForm.bypassDiodes, RANGES.groups);
   if (voc === null || beta === null || cells === null || groups === null) return null;
   // currents and the working point say nothing of an open string: the typical ones stand in
   return {
     ...SHEETS.m108,
-    name: 'own values',
+    name: sharedReadingsForm.ownValues,
     vocRef: voc,
     betaVoc: beta / 100,
     cellsInSeries: cells,
@@ -236,13 +247,12 @@ function readConditions(
   optional: (key: string, name: string, range: NumberRange) => number | null,
   faults: Faults,
 ): Conditions | null {
-  const poaGlobal = optional('poa', 'Light on the modules', RANGES.poa);
-  const temperatureCell = optional('cell', 'Cell temperature', RANGES.cell);
+  const poaGlobal = optional('poa', sharedReadingsForm.lightOnTheModules, RANGES.poa);
+  const temperatureCell = optional('cell', sharedReadingsForm.cellTemperature, RANGES.cell);
   if (poaGlobal === null && temperatureCell === null) return null;
   if (poaGlobal === null || temperatureCell === null) {
     const missing = poaGlobal === null ? 'poa' : 'cell';
-    faults[missing] ??=
-      `Light and cell temperature count together: type ${missing === 'poa' ? 'the light' : 'the temperature'} too, or empty the other.`;
+    faults[missing] ??= sharedReadingsForm.lightAndCellTemperature(missing);
     return null;
   }
   return { poaGlobal, temperatureCell, ...MEASURED };

@@ -3,6 +3,7 @@ import type { Interpretation } from '../../domain/readings/interpret';
 import type { ReadingQuestion } from '../../domain/readings/reading';
 import { number } from '../../drawings/numbers';
 import { expectedWords, hueOf, type Hue } from './words';
+import { sharedReadingsScale } from '../../words/shared-readings';
 
 /** A ruler of voltage: where the reading lies and where each likely explanation would. Places are shares 0 … 1. */
 export interface Scale {
@@ -33,9 +34,9 @@ export function scaleOf(answer: Interpretation, question: ReadingQuestion): Scal
   const module = vocOf(question.module, 700, 40);
   const fits = (s: number): boolean => s > 0 && span / s <= TICKS_MAX && span / s >= 3;
   const [step, meaning] = fits(unit)
-    ? [unit, 'one unit in shutdown']
+    ? [unit, sharedReadingsScale.oneUnitInShutdown]
     : fits(module)
-      ? [module, 'about one module in bright light']
+      ? [module, sharedReadingsScale.aboutOneModuleIn]
       : [NICE.find((n) => span / n <= 12) ?? 500, ''];
   const first = Math.min(0, Math.floor(lowest / step + 1e-9));
   const last = Math.max(1, Math.ceil(highest / step + 0.05));
@@ -68,6 +69,6 @@ export function scaleOf(answer: Interpretation, question: ReadingQuestion): Scal
       label: number(voltageV, Math.abs(voltageV) < 20 ? 1 : 0),
       hue: answer.outcome === 'as_expected' ? 'ink' : best.asExpected ? 'rust' : hueOf(best, question),
     },
-    step: meaning ? `a step is ${meaning}, ${number(step, step < 10 ? 1 : 0)}\u00a0V` : '',
+    step: meaning ? sharedReadingsScale.stepIs(meaning, step) : '',
   };
 }

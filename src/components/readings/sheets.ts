@@ -1,10 +1,11 @@
 import type { ModuleType } from '../../domain/equipment/module-type';
+import { sharedReadingsSheets } from '../../words/shared-readings';
 
 /** Datasheets of no maker in particular: what modules of such a size usually print. */
 
 export const SHEETS = {
   m60: {
-    name: '60 cells, about 330 W',
+    name: sharedReadingsSheets.n60CellsAbout330,
     vocRef: 40.6,
     iscRef: 10.3,
     vmpRef: 33.9,
@@ -17,7 +18,7 @@ export const SHEETS = {
     noct: 45,
   },
   m108: {
-    name: '108 half cells, about 410 W',
+    name: sharedReadingsSheets.n108HalfCellsAbout,
     vocRef: 37.3,
     iscRef: 13.9,
     vmpRef: 31.2,
@@ -30,7 +31,7 @@ export const SHEETS = {
     noct: 44,
   },
   m144: {
-    name: '144 half cells, about 550 W',
+    name: sharedReadingsSheets.n144HalfCellsAbout,
     vocRef: 49.9,
     iscRef: 14.0,
     vmpRef: 41.9,

@@ -1,26 +1,47 @@
 import { UNIT_KINDS } from '../../domain/equipment/unit-type';
 import type { Help, Interpretation, RankedHypothesis } from '../../domain/readings/interpret';
 import { expectedState, type ReadingQuestion } from '../../domain/readings/reading';
-import { counted, number, percent, volts } from '../../drawings/numbers';
+import { number, percent, volts } from '../../drawings/numbers';
 import { chosen, type Place, type ReadingForm } from './form';
 import { SHEET_KEYS, SHEETS } from './sheets';
+import { sharedReadingsWords } from '../../words/shared-readings';
 
 /** An answer in plain words: what a person on a roof reads or is read. */
 
 export const KIND_LABELS = {
-  shutdown_only: 'Shutdown-only',
-  monitored: 'Monitored',
-  optimizing: 'Optimizing',
+  shutdown_only: sharedReadingsWords.shutdownOnly,
+  monitored: sharedReadingsWords.monitored,
+  optimizing: sharedReadingsWords.optimizing,
 } as const;
-export const LIGHT_LABELS = { bright: 'bright', dull: 'dull', snow: 'snow', night: 'night' } as const;
-export const METER_LABELS = { high_impedance: 'ordinary input', low_impedance: 'low impedance' } as const;
-export const PLACE_LABELS = { between: '+ to −', positive: '+ to earth', negative: '− to earth' } as const;
+export const LIGHT_LABELS = {
+  bright: sharedReadingsWords.bright,
+  dull: sharedReadingsWords.dull,
+  snow: sharedReadingsWords.snow,
+  night: sharedReadingsWords.night,
+} as const;
+export const METER_LABELS = {
+  high_impedance: sharedReadingsWords.ordinaryInput,
+  low_impedance: sharedReadingsWords.lowImpedance,
+} as const;
+export const PLACE_LABELS = {
+  between: sharedReadingsWords.to,
+  positive: sharedReadingsWords.toEarth,
+  negative: sharedReadingsWords.toEarth2,
+} as const;
 
 /** What commands the units, by kind: shutdown-only units know only the keep-alive. */
 export function commandedLabels(kind: string): Record<'shutdown' | 'released' | 'unknown', string> {
   return kind === 'shutdown_only'
-    ? { shutdown: 'keep-alive off', released: 'on', unknown: 'not known' }
-    : { shutdown: 'in shutdown', released: 'released', unknown: 'nobody has said' };
+    ? {
+        shutdown: sharedReadingsWords.keepAliveOff,
+        released: sharedReadingsWords.on,
+        unknown: sharedReadingsWords.notKnown,
+      }
+    : {
+        shutdown: sharedReadingsWords.inShutdown,
+        released: sharedReadingsWords.released,
+        unknown: sharedReadingsWords.nobodyHasSaid,
+      };
 }
 
 /** "14 units, shutdown-only, 108 half cells, about 410 W" */
@@ -28,28 +49,32 @@ export function stringWords(form: ReadingForm): string {
   const kind = KIND_LABELS[chosen(UNIT_KINDS, form.kind, 'shutdown_only')].toLowerCase();
   const sheet = SHEET_KEYS.find((key) => key === form.module);
   const units = form.units.trim();
-  const count = /^\d+$/.test(units) ? counted(Number(units), 'unit') : `${units || '?'} units`;
-  return `${count}, ${kind}; module of ${sheet ? SHEETS[sheet].name : 'own values'}`;
+  const count = /^\d+$/.test(units)
+    ? sharedReadingsWords.countedUnitsUnit(Number(units))
+    : sharedReadingsWords.unitsUnits(units);
+  return sharedReadingsWords.moduleOf(count, kind, sheet && SHEETS[sheet].name);
 }
 
 export const HOW_TO_MEASURE: Record<Place, string> = {
-  between: 'Open circuit, string isolated, positive to negative.',
-  positive: 'Open circuit, string isolated, positive to earth. Wait until it settles.',
-  negative: 'Open circuit, string isolated, negative to earth. Wait until it settles.',
+  between: sharedReadingsWords.openCircuitStringIsolated,
+  positive: sharedReadingsWords.openCircuitStringIsolatedPositive,
+  negative: sharedReadingsWords.openCircuitStringIsolatedNegative,
 };
 
 /** The tag over the answer. */
 export function outcomeWords(answer: Interpretation): string {
   switch (answer.outcome) {
     case 'as_expected':
-      return 'As expected';
+      return sharedReadingsWords.asExpected;
     case 'proves_nothing':
-      return 'Proves nothing';
+      return sharedReadingsWords.provesNothing;
     case 'finding':
-      return 'Not as expected';
+      return sharedReadingsWords.notAsExpected;
     case 'cant_tell': {
       const fit = answer.likely.filter((h) => h.kind !== 'unexplained').length;
-      return fit === 2 ? "Can't tell: two explanations fit" : "Can't tell: several explanations fit";
+      return fit === 2
+        ? sharedReadingsWords.cantTellTwoExplanations
+        : sharedReadingsWords.cantTellSeveralExplanations;
     }
   }
 }
@@ -80,8 +105,8 @@ export function hueOf(h: RankedHypothesis, question: ReadingQuestion): Hue {
 
 /** A chance that never claims to be certain. */
 export function chance(probability: number): string {
-  if (probability >= 0.995) return `over ${percent(0.99)}`;
-  if (probability < 0.005) return `under ${percent(0.01)}`;
+  if (probability >= 0.995) return sharedReadingsWords.over;
+  if (probability < 0.005) return sharedReadingsWords.under;
   return percent(probability);
 }
 
@@ -99,33 +124,32 @@ export function expectedWords(answer: Interpretation): { words: string; from: nu
   const from = h.expectedV - 2 * h.sdV;
   const to = h.expectedV + 2 * h.sdV;
   const digits = Math.abs(to) < 20 ? 1 : 0;
-  return { words: `${number(from, digits)} to ${number(to, digits)} V`, from, to };
+  return { words: sharedReadingsWords.fromToDigitsV(from, digits, to), from, to };
 }
 
 /** What the answer rests on and what would make it firmer. */
 export function reasoning(answer: Interpretation, question: ReadingQuestion): string[] {
   const { units, unitType, meter, siblings, voltageV } = question;
-  const sentences = [`Expected: ${answer.expected}.`];
+  const sentences = [sharedReadingsWords.expectedExpected(answer.expected)];
   const band = expectedWords(answer);
-  if (band) sentences.push(`That would read ${band.words}.`);
+  if (band) sentences.push(sharedReadingsWords.thatWouldRead(band.words));
   const { passing } = expectedState(question);
   const nominal = unitType.shutdownVoltage.nominal;
   if (passing === 0 && Math.abs(voltageV) < 3 * units * unitType.shutdownVoltage.max)
     sentences.push(
-      `One unit in shutdown is worth ${quantityV(nominal)}, ${quantityV(unitType.shutdownVoltage.min, 2)} to ${quantityV(unitType.shutdownVoltage.max, 2)} by its type.`,
+      sharedReadingsWords.oneUnitInShutdown(
+        quantityV(nominal),
+        quantityV(unitType.shutdownVoltage.min, 2),
+        quantityV(unitType.shutdownVoltage.max, 2),
+      ),
     );
   if (answer.outcome === 'cant_tell' && siblings.length === 0)
-    sentences.push(
-      'Measure a string of the same types beside it, now: it shows what one unit gives in this light.',
-    );
+    sentences.push(sharedReadingsWords.measureAStringOf);
   if (answer.outcome === 'cant_tell' && siblings.length > 0)
-    sentences.push('Measure again before anything is changed.');
+    sentences.push(sharedReadingsWords.measureAgainBeforeAnything);
   if (meter.mode === 'low_impedance' && passing < units)
-    sentences.push('A low-impedance input pulls units in shutdown down: measure again with an ordinary one.');
-  if (voltageV < 0)
-    sentences.push(
-      'The reading is negative: check the leads at the meter first, then the marking of the home run.',
-    );
+    sentences.push(sharedReadingsWords.aLowImpedanceInput);
+  if (voltageV < 0) sentences.push(sharedReadingsWords.theReadingIsNegative);
   return sentences;
 }
 const quantityV = (v: number, digits = 1): string => `${number(v, digits)}\u00a0V`;
@@ -134,28 +158,25 @@ const quantityV = (v: number, digits = 1): string => `${number(v, digits)}\u00a0
 export function initiatorWords(answer: Interpretation, question: ReadingQuestion): string {
   const best = answer.hypotheses[0];
   const contradicted = best !== undefined && hueOf(best, question) === 'crimson' && best.probability > 0.2;
-  if (contradicted)
-    return 'The reading speaks against it: units seem to pass though shutdown is commanded. Treat the string as live.';
-  if (answer.obeysInitiator === false)
-    return 'No. None of its units has spoken to anything yet, so none follows the initiator. Treat the string as live.';
-  if (answer.obeysInitiator === null)
-    return 'Only some: units that have not answered do not follow the initiator. Treat the string as live.';
-  return 'By the type entered its units follow the initiator. One reading does not show that they do: that takes a shutdown test.';
+  if (contradicted) return sharedReadingsWords.theReadingSpeaksAgainst;
+  if (answer.obeysInitiator === false) return sharedReadingsWords.noNoneOfIts;
+  if (answer.obeysInitiator === null) return sharedReadingsWords.onlySomeUnitsThat;
+  return sharedReadingsWords.byTheTypeEntered;
 }
 
 const HELP_NAMES: Record<Help['what'], string> = {
-  siblings: 'Readings of other strings',
-  conditions: 'Measured light and temperature',
-  roll_call: 'The roll call',
-  meter: 'An ordinary meter input, not a low-impedance one',
+  siblings: sharedReadingsWords.readingsOfOtherStrings,
+  conditions: sharedReadingsWords.measuredLightAndTemperature,
+  roll_call: sharedReadingsWords.theRollCall,
+  meter: sharedReadingsWords.anOrdinaryMeterInput,
 };
 /** "Readings of other strings: from 58 % to 97 % for the first explanation". */
 export function helpWords(help: Help): { name: string; words: string } {
   const name = HELP_NAMES[help.what];
-  if (help.bits < 0.02) return { name, words: 'changed nothing worth naming' };
+  if (help.bits < 0.02) return { name, words: sharedReadingsWords.changedNothingWorthNaming };
   return {
     name,
-    words: `the first explanation stands at ${chance(help.with)} with it, ${chance(help.without)} without (${number(help.bits, 1)} bit)`,
+    words: sharedReadingsWords.theFirstExplanationStands(chance(help.with), chance(help.without), help.bits),
   };
 }
 
@@ -169,7 +190,7 @@ export function cautionParts(caution: string): { strong: string; rest: string } 
 
 /** What is read aloud: the answer first, the cautions always. */
 export function aloud(answer: Interpretation, question: ReadingQuestion): string {
-  const spokenVolts = `${number(question.voltageV, 1).replace('−', 'minus ')} volts.`;
+  const spokenVolts = sharedReadingsWords.replaceVolts(number(question.voltageV, 1).replace('−', 'minus '));
   const ranked = answer.likely
     .filter((h) => h.kind !== 'unexplained')
     .slice(0, 2)
@@ -179,7 +200,7 @@ export function aloud(answer: Interpretation, question: ReadingQuestion): string
     `${outcomeWords(answer)}.`,
     ...ranked,
     answer.earth?.words ?? '',
-    'Caution.',
+    sharedReadingsWords.caution,
     ...answer.cautions,
   ]
     .filter(Boolean)
@@ -188,4 +209,6 @@ export function aloud(answer: Interpretation, question: ReadingQuestion): string
 
 /** The page's title in the browser's list of pages. */
 export const titleOf = (question: ReadingQuestion | null, answer: Interpretation | null): string =>
-  question && answer ? `${volts(question.voltageV)}: ${outcomeWords(answer).toLowerCase()}` : 'Try a reading';
+  question && answer
+    ? `${volts(question.voltageV)}: ${outcomeWords(answer).toLowerCase()}`
+    : sharedReadingsWords.tryAReading;

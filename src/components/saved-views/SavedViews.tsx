@@ -9,6 +9,7 @@ import { Dialog } from '../ui/Dialog';
 import { Field } from '../ui/Field';
 import { NotRead } from '../ui/NotRead';
 import { Notice } from '../ui/Notice';
+import { savedViewsWords } from '../../words/saved-views';
 
 interface Props {
   list: SavedList;
@@ -42,7 +43,7 @@ function SaveForm({ list, query, onDone }: Pick<Props, 'list' | 'query'> & { onD
   return (
     <form onSubmit={submit} noValidate className="grid gap-3">
       <Field
-        label="Name of the view"
+        label={savedViewsWords.nameOfTheView}
         value={name}
         maxLength={80}
         onChange={(event) => setName(event.target.value)}
@@ -55,16 +56,16 @@ function SaveForm({ list, query, onDone }: Pick<Props, 'list' | 'query'> & { onD
           onChange={(event) => setShared(event.target.checked)}
           className="h-5 w-5 accent-[var(--ink)]"
         />
-        Share it with everybody of the organisation
+        {savedViewsWords.shareItWithEverybody}
       </label>
       {error && error.fields.length === 0 && (
-        <Notice kind="failed" title="The view was not saved">
+        <Notice kind="failed" title={savedViewsWords.theViewWasNot}>
           {error.message}
         </Notice>
       )}
       <div>
         <Button type="submit" weight="primary" disabled={save.isPending}>
-          {save.isPending ? 'Saving …' : 'Save the view'}
+          {save.isPending ? savedViewsWords.saving : savedViewsWords.saveTheView}
         </Button>
       </div>
     </form>
@@ -108,7 +109,7 @@ export function SavedViews({ list, path, query, initial }: Props) {
                 {view.name}
                 {view.shared && (
                   <span className="ml-1.5 text-sm font-normal text-ink-2">
-                    {view.own ? 'shared' : `by ${view.by}`}
+                    {view.own ? savedViewsWords.shared : savedViewsWords.byBy(view.by)}
                   </span>
                 )}
               </a>
@@ -117,17 +118,23 @@ export function SavedViews({ list, path, query, initial }: Props) {
                   <button
                     type="button"
                     className="target px-1.5 text-sm text-ink-2 hover:text-ink"
-                    aria-label={view.shared ? `Unshare “${view.name}”` : `Share “${view.name}”`}
-                    title={view.shared ? 'Keep to myself' : 'Share with the organisation'}
+                    aria-label={
+                      view.shared
+                        ? savedViewsWords.unshareView(view.name)
+                        : savedViewsWords.shareView(view.name)
+                    }
+                    title={
+                      view.shared ? savedViewsWords.keepToMyself : savedViewsWords.shareWithTheOrganisation
+                    }
                     disabled={share.isPending}
                     onClick={() => share.mutate(view)}
                   >
-                    {view.shared ? 'Unshare' : 'Share'}
+                    {view.shared ? savedViewsWords.unshare : savedViewsWords.share}
                   </button>
                   <button
                     type="button"
                     className="target min-w-[36px] px-2 text-lg leading-none text-ink-2 hover:text-ink"
-                    aria-label={`Remove the view “${view.name}”`}
+                    aria-label={savedViewsWords.removeTheView(view.name)}
                     disabled={drop.isPending}
                     onClick={() => drop.mutate(view)}
                   >
@@ -139,16 +146,16 @@ export function SavedViews({ list, path, query, initial }: Props) {
           );
         })}
         <Button className="!px-3" onClick={() => setSaving(true)}>
-          Save this view
+          {savedViewsWords.saveThisView}
         </Button>
       </div>
       <NotRead
         error={drop.error ?? share.error}
-        title="The view stands as it was"
+        title={savedViewsWords.theViewStandsAs}
         kind="failed"
         className="mt-2"
       />
-      <Dialog open={saving} title="Save this view" onClose={() => setSaving(false)}>
+      <Dialog open={saving} title={savedViewsWords.saveThisView} onClose={() => setSaving(false)}>
         <SaveForm list={list} query={query} onDone={() => setSaving(false)} />
       </Dialog>
     </div>

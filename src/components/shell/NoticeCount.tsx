@@ -2,6 +2,7 @@ import { useState } from 'react';
 import { useLive } from '../../lib/live-hook';
 import type { NoticesNow } from '../../schemas/live';
 import { paths } from '../../schemas/paths';
+import { noticeCount } from '../../words/shell';
 
 interface Props {
   unread: number;
@@ -45,7 +46,7 @@ export function NoticeCount({ unread, hazards }: Props) {
           />
           <path d="M5 7h8M5 9.8h5" stroke="currentColor" strokeWidth="1.4" />
         </svg>
-        <span className="sr-only xl:not-sr-only">Notices</span>
+        <span className="sr-only xl:not-sr-only">{noticeCount.notices}</span>
         {now.unread > 0 && (
           <span
             className={`min-w-[20px] rounded-sm px-1 text-center text-xs font-semibold leading-5 ${now.hazards > 0 ? 'bg-crimson text-on-crimson' : 'bg-ink text-sheet'}`}
@@ -53,18 +54,19 @@ export function NoticeCount({ unread, hazards }: Props) {
             {count}
           </span>
         )}
-        <span className="sr-only">{now.unread > 0 ? 'unread' : 'all read'}</span>
+        <span className="sr-only">{now.unread > 0 ? noticeCount.unread : noticeCount.allRead}</span>
       </a>
       <p role="status" className="sr-only">
-        {came ? `New notice. ${where}${came.headline}` : ''}
+        {came ? noticeCount.newNotice(where, came.headline) : ''}
       </p>
       {came && shown === came.id && (
         <aside
-          aria-label="Not shutting down"
+          aria-label={noticeCount.notShuttingDown}
           className="fixed inset-x-3 bottom-3 z-50 border border-t-2 border-rule border-t-crimson bg-sheet p-4 sm:left-auto sm:w-[380px]"
         >
           <p className="text-sm font-semibold text-crimson">
-            <span aria-hidden="true">◆</span> Not shutting down
+            <span aria-hidden="true">◆</span>
+            {noticeCount.notShuttingDown2}
           </p>
           <p className="mt-1 font-medium">
             {where}
@@ -72,10 +74,10 @@ export function NoticeCount({ unread, hazards }: Props) {
           </p>
           <div className="mt-2 flex gap-4">
             <a href={came.href} className="target inline-flex items-center font-medium text-petrol underline">
-              See what to treat as live
+              {noticeCount.seeWhatToTreat}
             </a>
             <button type="button" className="target text-ink-2 hover:text-ink" onClick={() => setShown(null)}>
-              Not now
+              {noticeCount.notNow}
             </button>
           </div>
         </aside>

@@ -2,9 +2,14 @@ import { useEffect, useId, useRef, useState, type KeyboardEvent } from 'react';
 import { api, ApiError } from '../../lib/api';
 import type { SearchReply } from '../../schemas/api/search';
 import { paths } from '../../schemas/paths';
+import { shellSearch } from '../../words/shell';
 
 type Result = SearchReply['results'][number];
-const KIND: Record<Result['kind'], string> = { site: 'Site', string: 'String', unit: 'Unit' };
+const KIND: Record<Result['kind'], string> = {
+  site: shellSearch.site,
+  string: shellSearch.string,
+  unit: shellSearch.unit,
+};
 
 const NOTHING = { q: '', results: [], note: '' };
 
@@ -20,7 +25,9 @@ function useFound(q: string): { results: Result[]; note: string } {
           setFound({
             q,
             results,
-            note: results.length ? `${results.length} found` : `Nothing here is called “${q}”`,
+            note: results.length
+              ? shellSearch.resultsFound(results.length)
+              : shellSearch.nothingHereIsCalled(q),
           }),
         )
         .catch((error: unknown) => {
@@ -79,7 +86,7 @@ export function Search() {
     <form
       action={paths.fleet()}
       role="search"
-      aria-label="Everything"
+      aria-label={shellSearch.everything}
       className="relative"
       onFocus={() => setOpen(true)}
       onBlur={(event) => {
@@ -91,8 +98,8 @@ export function Search() {
         type="search"
         name="q"
         autoComplete="off"
-        aria-label="Find a site, string or serial"
-        placeholder="Find a site, string or serial"
+        aria-label={shellSearch.findASiteString}
+        placeholder={shellSearch.findASiteString}
         role="combobox"
         aria-expanded={showing}
         aria-controls={listId}
@@ -117,7 +124,7 @@ export function Search() {
         hidden={!showing}
         className="absolute right-0 z-40 mt-1 w-[min(420px,calc(100vw-32px))] border border-t-2 border-rule border-t-ink bg-sheet"
       >
-        <ul id={listId} role="listbox" aria-label="Found">
+        <ul id={listId} role="listbox" aria-label={shellSearch.found}>
           {results.map((result, i) => (
             <li
               key={`${result.kind} ${result.href} ${result.label}`}

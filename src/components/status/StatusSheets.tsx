@@ -7,11 +7,12 @@ import { Sheet } from '../ui/Sheet';
 import { Table, type Column } from '../ui/Table';
 import { Tag } from '../ui/Tag';
 import { judgementLate, placesMissing, rollUpLate } from './finding';
+import { statusSheets } from '../../words/status';
 
 type Logger = InstallationStatus['loggers'][number];
 
 function When({ at, now, timeZone }: { at: string | null; now: string; timeZone: string }) {
-  if (!at) return <>never</>;
+  if (!at) return <>{statusSheets.never}</>;
   return (
     <time dateTime={at} title={fullTime(at, timeZone)}>
       {ago(at, now)}
@@ -27,7 +28,7 @@ export function StatusSheets({ status, timeZone }: { status: InstallationStatus;
   const columns: Column<Logger>[] = [
     {
       key: 'logger',
-      label: 'Logger',
+      label: statusSheets.logger,
       cell: (l) => (
         <>
           <span className="font-semibold">{l.serial}</span>
@@ -41,12 +42,12 @@ export function StatusSheets({ status, timeZone }: { status: InstallationStatus;
     },
     {
       key: 'connected',
-      label: 'Last spoke',
+      label: statusSheets.lastSpoke,
       cell: (l) => (
         <>
           {!l.connected && (
             <Tag tone="slate" shape="▨">
-              Not connected
+              {statusSheets.notConnected}
             </Tag>
           )}{' '}
           <span className="whitespace-nowrap">
@@ -57,19 +58,19 @@ export function StatusSheets({ status, timeZone }: { status: InstallationStatus;
     },
     {
       key: 'firmware',
-      label: 'Firmware, address',
+      label: statusSheets.firmwareAddress,
       from: 'md',
       cell: (l) => (
         <>
           {l.firmware ?? '–'}
-          <span className="block text-sm text-ink-2">{l.lastAddress ?? 'no address yet'}</span>
+          <span className="block text-sm text-ink-2">{l.lastAddress ?? statusSheets.noAddressYet}</span>
         </>
       ),
     },
-    { key: 'refused', label: 'Refused', numeric: true, cell: (l) => number(l.refused) },
+    { key: 'refused', label: statusSheets.refused, numeric: true, cell: (l) => number(l.refused) },
     {
       key: 'refusal',
-      label: 'Last refusal',
+      label: statusSheets.lastRefusal,
       cell: (l) =>
         l.lastRefusal ? (
           <>
@@ -79,104 +80,103 @@ export function StatusSheets({ status, timeZone }: { status: InstallationStatus;
             </span>
           </>
         ) : (
-          <span className="text-ink-2">none</span>
+          <span className="text-ink-2">{statusSheets.none}</span>
         ),
     },
   ];
   return (
     <div className="space-y-6">
       {!database.rowSecurity && (
-        <Notice kind="stale" title="One database account for everything">
-          The account given may not create roles, so the database itself does not keep organisations apart;
-          the queries still do. Give an account that may create roles, or addresses of two accounts, and start
-          again.
+        <Notice kind="stale" title={statusSheets.oneDatabaseAccountFor}>
+          {statusSheets.theAccountGivenMay}
         </Notice>
       )}
-      <Sheet id="loggers" flush title="Loggers" aside="newest refusal first">
+      <Sheet id="loggers" flush title={statusSheets.loggers} aside={statusSheets.newestRefusalFirst}>
         <Table
-          caption="Loggers with their connection and what was refused from them"
+          caption={statusSheets.loggersWithTheirConnection}
           columns={columns}
           rows={loggers}
           rowKey={(l) => l.serial}
-          empty={<Notice kind="empty" title="No logger is entered yet" />}
+          empty={<Notice kind="empty" title={statusSheets.noLoggerIsEntered} />}
         />
       </Sheet>
       <div className="grid items-start gap-6 lg:grid-cols-2">
-        <Sheet id="work" title="Work">
+        <Sheet id="work" title={statusSheets.work}>
           <dl>
             <div className={row}>
-              <dt>Newest frame</dt>
+              <dt>{statusSheets.newestFrame}</dt>
               <dd>
                 <When at={work.newestFrameAt} now={now} timeZone={timeZone} />
               </dd>
             </div>
             <div className={row}>
-              <dt>Judgement</dt>
+              <dt>{statusSheets.judgement}</dt>
               <dd>
                 {judgementLate(status) ? (
                   <>
-                    {number(work.unjudgedStrings)} strings wait, the first since{' '}
+                    {statusSheets.stringsWaitTheFirst(work.unjudgedStrings)}
                     <When at={work.unjudgedSince} now={now} timeZone={timeZone} />
                   </>
                 ) : (
-                  'up with what has come in'
+                  statusSheets.upWithWhatHas
                 )}
               </dd>
             </div>
             <div className={row}>
-              <dt>Roll-ups</dt>
+              <dt>{statusSheets.rollUps}</dt>
               <dd>
-                {rollUpLate(status) && 'stand still; '}
+                {rollUpLate(status) && statusSheets.standStill}
                 {work.rolledUpTo ? (
                   <>
-                    done up to <When at={work.rolledUpTo} now={now} timeZone={timeZone} />
+                    {statusSheets.doneUpTo}
+                    <When at={work.rolledUpTo} now={now} timeZone={timeZone} />
                   </>
                 ) : (
-                  'none done yet'
+                  statusSheets.noneDoneYet
                 )}
-                ; {number(work.quartersWaiting)} quarters wait
+                {statusSheets.quartersWait(work.quartersWaiting)}
               </dd>
             </div>
             <div className={row}>
-              <dt>Frames parked for lack of a place</dt>
+              <dt>{statusSheets.framesParkedForLack}</dt>
               <dd>{number(work.lateFrames)}</dd>
             </div>
             <div className={row}>
-              <dt>Places prepared to</dt>
+              <dt>{statusSheets.placesPreparedTo}</dt>
               <dd>
-                {work.preparedTo ?? 'none'}
-                {placesMissing(status) && ' (tomorrow is missing)'}
+                {work.preparedTo ?? statusSheets.none}
+                {placesMissing(status) && statusSheets.tomorrowIsMissing}
               </dd>
             </div>
           </dl>
         </Sheet>
-        <Sheet id="installation" title="Database and processes">
+        <Sheet id="installation" title={statusSheets.databaseAndProcesses}>
           <dl>
             <div className={row}>
-              <dt>PostgreSQL</dt>
+              <dt>{statusSheets.postgreSQL}</dt>
               <dd>
                 {database.version}, {quantity(database.bytes / 1e6, 'MB')}
               </dd>
             </div>
             <div className={row}>
-              <dt>Organisations kept apart by the database</dt>
-              <dd>{database.rowSecurity ? 'yes' : 'no, one account'}</dd>
+              <dt>{statusSheets.organisationsKeptApartBy}</dt>
+              <dd>{database.rowSecurity ? statusSheets.yes : statusSheets.noOneAccount}</dd>
             </div>
             {status.unknownTokens !== null && (
               <div className={row}>
-                <dt>Connections refused for an unknown token, since the start</dt>
+                <dt>{statusSheets.connectionsRefusedForAn}</dt>
                 <dd>{number(status.unknownTokens)}</dd>
               </div>
             )}
             {processes.map((p) => (
               <div key={p.name} className={row}>
-                <dt>Process {p.name.slice(0, 8)}</dt>
-                <dd>serves {number(p.loggers)} loggers</dd>
+                <dt>{statusSheets.processName(p.name.slice(0, 8))}</dt>
+                <dd>{statusSheets.servesLoggers(p.loggers)}</dd>
               </div>
             ))}
           </dl>
           {processes.length === 0 && (
-            <p className="mt-2 text-sm text-ink-2">No process serves a logger of yours just now.</p>
+            <p className="mt-2 text-sm text-ink-2">{statusSheets.noProcessServesA}</p>
           )}
         </Sheet>
       </div>

@@ -1,5 +1,6 @@
-import { counted, countAtStart, listed, number } from '../../drawings/numbers';
+import { listed, number } from '../../drawings/numbers';
 import type { InstallationStatus } from '../../schemas/api/status';
+import { statusFindingWords } from '../../words/status';
 
 /** Roll-ups close a quarter some minutes after its end; this much behind, something stands still. Seconds. */
 const ROLL_UP_LATE_S = 40 * 60;
@@ -23,22 +24,20 @@ export function statusFinding(status: InstallationStatus): { heading: string; se
   const away = loggers.filter((l) => !l.connected);
   const refused = loggers.reduce((sum, l) => sum + l.refused, 0);
   const faults = [
-    judgementLate(status) ? 'judgement is behind what has come in' : '',
-    rollUpLate(status) ? 'roll-ups stand still' : '',
-    placesMissing(status) ? 'no place is prepared for the frames of tomorrow' : '',
-    database.rowSecurity ? '' : 'all runs with one database account',
+    judgementLate(status) ? statusFindingWords.judgementIsBehindWhat : '',
+    rollUpLate(status) ? statusFindingWords.rollUpsStandStill : '',
+    placesMissing(status) ? statusFindingWords.noPlaceIsPrepared : '',
+    database.rowSecurity ? '' : statusFindingWords.allRunsWithOne,
   ].filter(Boolean);
-  const counts = `${number(loggers.length - away.length)} of ${counted(loggers.length, 'logger')} connected; ${
-    refused === 0 ? 'no message was refused' : `${counted(refused, 'message')} refused since they were set up`
-  }.`;
+  const counts = statusFindingWords.loggersOfLoggersConnected(loggers.length, away.length, refused);
   if (faults.length > 0) {
     const text = listed(faults);
     return { heading: `${text.charAt(0).toUpperCase()}${text.slice(1)}`, sentence: counts };
   }
   if (away.length > 0)
     return {
-      heading: `${countAtStart(away.length)} of ${counted(loggers.length, 'logger')} ${away.length === 1 ? 'is' : 'are'} not connected`,
-      sentence: `Nothing newer is known of ${away.length === 1 ? 'its site' : 'their sites'} until ${away.length === 1 ? 'it comes' : 'they come'} back. ${counts}`,
+      heading: statusFindingWords.ofNotConnected(away.length, loggers.length),
+      sentence: statusFindingWords.nothingNewerIsKnown(away.length, counts),
     };
-  return { heading: 'The installation runs as it should', sentence: counts };
+  return { heading: statusFindingWords.theInstallationRunsAs, sentence: counts };
 }

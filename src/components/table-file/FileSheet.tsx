@@ -6,6 +6,7 @@ import { Sheet } from '../ui/Sheet';
 import { number } from '../../drawings/numbers';
 import { ENCODING_NAMES, type Encoding } from './decode';
 import { SEPARATOR_NAMES, SEPARATORS, type Separator } from './separators';
+import { fileSheet } from '../../words/table-file';
 
 /** What is said of a file before its cells are looked at. */
 export interface TableFacts {
@@ -47,7 +48,7 @@ export function FileSheet({ hint, name, facts, fault, onFile, onPaste, onSplit }
     else if (text) onPaste(text);
   };
   return (
-    <Sheet id="file" title="The file" aside={name ?? undefined}>
+    <Sheet id="file" title={fileSheet.theFile} aside={name ?? undefined}>
       <div
         onDragOver={(event) => {
           event.preventDefault();
@@ -59,7 +60,7 @@ export function FileSheet({ hint, name, facts, fault, onFile, onPaste, onSplit }
       >
         <div>
           <label htmlFor={fileId} className="mb-1 block font-medium">
-            A file: CSV or tab-separated
+            {fileSheet.aFileCSVOr}
           </label>
           <input
             id={fileId}
@@ -76,7 +77,7 @@ export function FileSheet({ hint, name, facts, fault, onFile, onPaste, onSplit }
         </div>
         <div>
           <label htmlFor={pasteId} className="mb-1 block font-medium">
-            Or paste cells from a spreadsheet
+            {fileSheet.orPasteCellsFrom}
           </label>
           <textarea
             id={pasteId}
@@ -94,13 +95,13 @@ export function FileSheet({ hint, name, facts, fault, onFile, onPaste, onSplit }
             className="block w-full rounded border border-rule bg-sheet px-3 py-2 text-[16px]"
           />
           <Button className="mt-2" disabled={pasted.trim() === ''} onClick={() => onPaste(pasted)}>
-            Read what is pasted
+            {fileSheet.readWhatIsPasted}
           </Button>
         </div>
       </div>
       {fault && (
         <div className="mt-4">
-          <Notice kind="failed" title="This can't be read">
+          <Notice kind="failed" title={fileSheet.thisCantBeRead}>
             {fault}
           </Notice>
         </div>
@@ -108,18 +109,18 @@ export function FileSheet({ hint, name, facts, fault, onFile, onPaste, onSplit }
       {facts && (
         <div className="mt-4 grid items-end gap-4 sm:grid-cols-2 lg:grid-cols-4">
           <p className="text-[15px]">
-            <strong className="font-semibold">{number(facts.rows)} rows</strong>, {facts.headers.length}{' '}
-            columns
+            <strong className="font-semibold">{fileSheet.rowsRows(facts.rows)}</strong>
+            {fileSheet.headersColumns(facts.headers.length)}
             {facts.encoding && <>, {ENCODING_NAMES[facts.encoding]}</>}
             {facts.emptyLines > 0 && (
               <>
                 <br />
-                {number(facts.emptyLines)} empty {facts.emptyLines === 1 ? 'line' : 'lines'} left out
+                {fileSheet.emptyLeftOut(facts.emptyLines)}
               </>
             )}
           </p>
           <Choice
-            label="Cells are separated by"
+            label={fileSheet.cellsAreSeparatedBy}
             value={facts.separator}
             options={SEPARATORS.map((s) => ({ value: s, label: SEPARATOR_NAMES[s] }))}
             onChange={(value) => onSplit(value as Separator, facts.hasHeader)}
@@ -131,18 +132,16 @@ export function FileSheet({ hint, name, facts, fault, onFile, onPaste, onSplit }
               checked={facts.hasHeader}
               onChange={(event) => onSplit(facts.separator, event.target.checked)}
             />
-            The first row names the columns
+            {fileSheet.theFirstRowNames}
           </label>
         </div>
       )}
       {facts && facts.faults.length > 0 && (
         <div className="mt-4">
-          <Notice kind="failed" title="Parts of the file could not be split into cells">
+          <Notice kind="failed" title={fileSheet.partsOfTheFile}>
             <ul>
               {facts.faults.slice(0, 5).map((f) => (
-                <li key={f.line}>
-                  Row {number(f.line)}: {f.message}.
-                </li>
+                <li key={f.line}>{fileSheet.rowLineMessage(f.line, f.message)}</li>
               ))}
             </ul>
           </Notice>

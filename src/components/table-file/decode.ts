@@ -1,3 +1,4 @@
+import { tableDecode } from '../../words/table-file';
 /** Bytes of a spreadsheet's export as text. */
 
 export const ENCODINGS = ['utf-8', 'utf-16le', 'utf-16be', 'windows-1252'] as const;
@@ -5,17 +6,17 @@ export type Encoding = (typeof ENCODINGS)[number];
 export const ENCODING_NAMES: Record<Encoding, string> = {
   'utf-8': 'UTF-8',
   'utf-16le': 'UTF-16',
-  'utf-16be': 'UTF-16 (big-endian)',
-  'windows-1252': 'Windows-1252 (Western European)',
+  'utf-16be': tableDecode.utf16BigEndian,
+  'windows-1252': tableDecode.windows1252WesternEuropean,
 };
 
 /** What a file that is no text begins with, and what to do about it. */
 const NO_TEXT: readonly { starts: readonly number[]; what: string }[] = [
-  { starts: [0x50, 0x4b, 0x03, 0x04], what: 'a spreadsheet file (such as .xlsx or .ods)' },
-  { starts: [0xd0, 0xcf, 0x11, 0xe0], what: 'a spreadsheet file of an older kind (.xls)' },
-  { starts: [0x25, 0x50, 0x44, 0x46], what: 'a PDF' },
-  { starts: [0xff, 0xd8, 0xff], what: 'a photo' },
-  { starts: [0x89, 0x50, 0x4e, 0x47], what: 'a picture' },
+  { starts: [0x50, 0x4b, 0x03, 0x04], what: tableDecode.aSpreadsheetFileSuch },
+  { starts: [0xd0, 0xcf, 0x11, 0xe0], what: tableDecode.aSpreadsheetFileOf },
+  { starts: [0x25, 0x50, 0x44, 0x46], what: tableDecode.aPDF },
+  { starts: [0xff, 0xd8, 0xff], what: tableDecode.aPhoto },
+  { starts: [0x89, 0x50, 0x4e, 0x47], what: tableDecode.aPicture },
 ];
 
 export type Decoded = { text: string; encoding: Encoding } | { fault: string };
@@ -58,13 +59,13 @@ export function decode(bytes: Uint8Array): Decoded {
   const kind = NO_TEXT.find((k) => k.starts.every((b, i) => bytes[i] === b));
   if (kind)
     return {
-      fault: `This is ${kind.what}. Save the sheet as CSV (UTF-8), or copy its cells and paste them here.`,
+      fault: tableDecode.thisIsSaveThe(kind.what),
     };
   const encoding = encodingOf(bytes);
   const text = encoding && new TextDecoder(encoding).decode(bytes).replace(/^\ufeff/, '');
   if (!encoding || text === null || text.includes('\0'))
     return {
-      fault: 'This file is no text. Save the sheet as CSV (UTF-8), or copy its cells and paste them here.',
+      fault: tableDecode.thisFileIsNo,
     };
   return { text, encoding };
 }

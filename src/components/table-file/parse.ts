@@ -1,5 +1,7 @@
 import Papa from 'papaparse';
 import { SEPARATORS, type Separator } from './separators';
+import { tableParse } from '../../words/table-file';
+import { LOCALE } from '../../words/language';
 
 /** Text with separators as rows of cells. */
 export const ROWS_MAX = 20_000;
@@ -66,10 +68,7 @@ export function parseText(
       for (const error of result.errors)
         parsed.faults.push({
           line,
-          message:
-            error.code === 'MissingQuotes'
-              ? 'a quote is opened and never closed: the rest of the file would be one cell'
-              : 'a quote stands inside a cell: quotes around a cell must be its first and last mark',
+          message: error.code === 'MissingQuotes' ? tableParse.aQuoteIsOpened : tableParse.aQuoteStandsInside,
         });
       if (cells.every((c) => c.trim() === '')) {
         if (to <= body.length && from < body.length) parsed.emptyLines++;
@@ -82,7 +81,7 @@ export function parseText(
       if (parsed.rows.length > ROWS_MAX + 1) {
         parsed.faults.push({
           line,
-          message: `the file has more than ${ROWS_MAX.toLocaleString('en-GB')} rows: import it in parts`,
+          message: tableParse.theFileHasMore(ROWS_MAX.toLocaleString(LOCALE)),
         });
         parser.abort();
       }

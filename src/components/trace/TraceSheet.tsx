@@ -11,6 +11,7 @@ import { queryClient } from '../../lib/query-client';
 import { paths } from '../../schemas/paths';
 import type { SiteTraces } from '../../schemas/api/trace';
 import { POINT_WORDS, bestTraces, factsOf, traceWords, type TraceFacts } from './model';
+import { traceSheet } from '../../words/trace';
 
 interface Props {
   siteId: string;
@@ -26,21 +27,25 @@ const EVERY_MS = 2000;
 const columns = (limit: SiteTraces['limit']): Column<TraceFacts>[] => [
   {
     key: 'string',
-    label: 'String',
+    label: traceSheet.string,
     cell: (f) => <span className="font-semibold">{f.trace.stringName}</span>,
   },
-  { key: 'first', label: 'At the command', numeric: true, cell: (f) => volts(f.first) },
-  { key: 'last', label: 'Newest', numeric: true, cell: (f) => volts(f.last) },
+  { key: 'first', label: traceSheet.atTheCommand, numeric: true, cell: (f) => volts(f.first) },
+  { key: 'last', label: traceSheet.newest, numeric: true, cell: (f) => volts(f.last) },
   {
     key: 'under',
-    label: `${limit.voltage} V or less`,
+    label: traceSheet.orLess(limit.voltage),
     numeric: true,
     cell: (f) =>
-      f.underFromS === null ? UNKNOWN : f.underFromS === 0 ? 'from the start' : `after ${f.underFromS} s`,
+      f.underFromS === null
+        ? UNKNOWN
+        : f.underFromS === 0
+          ? traceSheet.fromTheStart
+          : traceSheet.afterUnderFromSS(f.underFromS),
   },
   {
     key: 'point',
-    label: 'Measured',
+    label: traceSheet.measured,
     from: 'md',
     className: 'text-ink-2',
     cell: (f) => `${POINT_WORDS[f.trace.measuringPoint]}, ±${volts(f.trace.accuracy)}`,
@@ -81,12 +86,12 @@ export function TraceSheet({ siteId, stringId, timeZone }: Props) {
       tone: (f.last ?? 0) > limit.voltage ? ('passing' as const) : ('shutdown' as const),
     })),
     limit,
-    label: `Voltage in the seconds after ${clockSeconds(startedAt, timeZone)}. ${words}`,
+    label: traceSheet.voltageInTheSeconds(startedAt, timeZone, words),
   };
   return (
     <Sheet
       id="trace"
-      title="Second by second"
+      title={traceSheet.secondBySecond}
       flush
       aside={
         <time dateTime={startedAt} title={fullTime(startedAt, timeZone)}>
@@ -105,18 +110,18 @@ export function TraceSheet({ siteId, stringId, timeZone }: Props) {
       </div>
       <details className="mt-2">
         <summary className="inline-flex min-h-[36px] cursor-pointer items-center text-sm underline underline-offset-2">
-          The same as a table
+          {traceSheet.theSameAsA}
         </summary>
         <Table
-          caption={`Voltages after the command of ${clockSeconds(startedAt, timeZone)}`}
+          caption={traceSheet.voltagesAfterTheCommand(startedAt, timeZone)}
           columns={columns(limit)}
           rows={facts}
           rowKey={(f) => f.trace.stringId}
         />
       </details>
       <p className="mt-2 text-sm text-ink-2">
-        Reports of units and inverters are no test: only a rated meter at the home run shows that a string is
-        dead. Time limit: {limit.source}.{error && ' The newest seconds could not be read.'}
+        {traceSheet.reportsOfUnitsAnd(limit.source)}
+        {error && traceSheet.theNewestSecondsCould}
       </p>
     </Sheet>
   );

@@ -1,5 +1,6 @@
-import { counted, listed, number } from '../../drawings/numbers';
+import { listed, number } from '../../drawings/numbers';
 import type { SiteTraces, StringTrace } from '../../schemas/api/trace';
+import { traceModel } from '../../words/trace';
 
 /** What a trace shows of one string, in figures. */
 export interface TraceFacts {
@@ -54,35 +55,34 @@ export function bestTraces(traces: readonly StringTrace[]): StringTrace[] {
 }
 
 export const POINT_WORDS = {
-  home_run: 'at the home run',
-  input: 'at the inverter’s input, which its capacitors hold up',
-  unit_sum: 'sum of what its units report',
+  home_run: traceModel.atTheHomeRun,
+  input: traceModel.atTheInvertersInput,
+  unit_sum: traceModel.sumOfWhatIts,
 } as const;
 
 const SHUTDOWN = new Set(['initiator', 'keep_alive_lost', 'power_lost']);
 
 /** What the traces show, in one or two sentences. They come from telemetry: never a test. */
 export function traceWords(read: SiteTraces): string {
-  if (!read.startedAt || read.traces.length === 0)
-    return 'No voltages have been recorded second by second yet.';
+  if (!read.startedAt || read.traces.length === 0) return traceModel.noVoltagesHaveBeen;
   const facts = bestTraces(read.traces).map((t) => factsOf(t, read.limit.voltage));
   const known = facts.filter((f) => f.last !== null);
   const untold = facts.length - known.length;
-  const rest = untold > 0 ? ` ${counted(untold, 'string')} ${untold === 1 ? 'tells' : 'tell'} nothing.` : '';
-  if (known.length === 0) return `No string has told its voltage since the command.${rest}`;
+  const rest = untold > 0 ? traceModel.untoldUntoldNothing(untold) : '';
+  if (known.length === 0) return traceModel.noStringHasTold(rest);
   const under = known.filter((f) => f.underFromS !== null);
   if (!read.command || !SHUTDOWN.has(read.command.inForce)) {
     const up = known.filter((f) => (f.last ?? 0) > read.limit.voltage).length;
-    return `${number(up)} of ${counted(known.length, 'string')} ${up === 1 ? 'is' : 'are'} above ${read.limit.voltage} V again.${rest}`;
+    return traceModel.ofAboveAgain(up, known.length, read.limit.voltage, rest);
   }
   const times = under.map((f) => f.underFromS ?? 0);
   const span =
     Math.min(...times) === Math.max(...times)
       ? `${times[0]} s`
-      : `${Math.min(...times)} to ${Math.max(...times)} s`;
+      : traceModel.minToMaxS(Math.min(...times), Math.max(...times));
   if (under.length === known.length)
-    return `${known.length === 1 ? 'The string' : `All ${known.length} strings`} fell to ${read.limit.voltage} V or less within ${span}, by telemetry.${rest}`;
+    return traceModel.known1TheString(known.length, read.limit.voltage, span, rest);
   const over = known.filter((f) => f.underFromS === null).map((f) => f.trace.stringName);
-  const named = over.length <= 5 ? listed(over) : counted(over.length, 'string');
-  return `${under.length} of ${counted(known.length, 'string')} fell to ${read.limit.voltage} V or less; ${named} ${over.length === 1 ? 'is' : 'are'} still above it.${rest}`;
+  const named = over.length <= 5 ? listed(over) : traceModel.countedOverString(over.length);
+  return traceModel.ofFellToOr(under.length, known.length, read.limit.voltage, named, over.length, rest);
 }

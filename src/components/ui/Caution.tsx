@@ -1,11 +1,12 @@
 import type { ReactNode } from 'react';
+import { caution } from '../../words/ui';
 
 /** A safety caution: ink ground and yellow triangle belong to nothing else. */
 export function Caution({ strong, children }: { strong: string; children?: ReactNode }) {
   return (
     <div
       role="note"
-      aria-label={`Safety caution: ${strong}`}
+      aria-label={caution.safetyCaution(strong)}
       className="rounded border border-caution-ground bg-caution-ground px-4 py-3 text-[15px] leading-[22px] text-caution-text"
     >
       <p>

@@ -1,4 +1,5 @@
 import { useEffect, useRef, type ReactNode } from 'react';
+import { uiDialog } from '../../words/ui';
 
 interface Props {
   open: boolean;
@@ -31,7 +32,7 @@ export function Dialog({ open, title, onClose, children }: Props) {
               type="button"
               onClick={onClose}
               className="target -mr-3 -mt-2 min-w-[44px] text-2xl leading-none text-ink-2 hover:text-ink"
-              aria-label="Close"
+              aria-label={uiDialog.close}
             >
               ×
             </button>

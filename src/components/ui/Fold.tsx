@@ -1,4 +1,5 @@
 import type { ReactNode } from 'react';
+import { fold } from '../../words/ui';
 
 interface Props {
   /** What is inside, or what it says at present. */
@@ -19,7 +20,7 @@ export function Fold({ title, opens, open = false, children, className = '' }: P
         <span className="min-w-0 font-medium">{title}</span>
         <span className="shrink-0 text-sm text-petrol underline underline-offset-[3px]">
           <span className="group-open:hidden">{opens}</span>
-          <span className="hidden group-open:inline">Fold</span>
+          <span className="hidden group-open:inline">{fold.fold}</span>
         </span>
       </summary>
       {children}

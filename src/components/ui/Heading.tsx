@@ -1,4 +1,5 @@
 import type { ReactNode } from 'react';
+import { heading } from '../../words/ui';
 
 interface Crumb {
   label: string;
@@ -20,7 +21,7 @@ export function Heading({ crumbs, finding, sentence, actions }: Props) {
     <header className="mb-6 flex flex-wrap items-end justify-between gap-x-8 gap-y-4">
       <div className="min-w-0 max-w-[860px]">
         {crumbs && crumbs.length > 0 && (
-          <nav aria-label="Where this page is" className="mb-1 text-sm text-ink-2">
+          <nav aria-label={heading.whereThisPageIs} className="mb-1 text-sm text-ink-2">
             <ol className="flex flex-wrap gap-x-1">
               {crumbs.map((crumb, i) => (
                 <li key={`${i} ${crumb.label}`} className="flex gap-1">

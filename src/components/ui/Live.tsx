@@ -1,4 +1,4 @@
-import { clock } from '../../drawings/times';
+import { live } from '../../words/ui';
 
 interface Props {
   /** Since when nothing has come, ISO 8601; null while the connection stands. */
@@ -12,7 +12,8 @@ export function LiveMark({ lostSince, timeZone }: Props) {
     <span role="status" className="text-sm">
       {lostSince ? (
         <span className="inline-flex items-center gap-1.5 rounded bg-rust-wash px-2 leading-[22px] text-rust-ink">
-          <span aria-hidden="true">◔</span> Not live since {clock(lostSince, timeZone)}
+          <span aria-hidden="true">◔</span>
+          {live.notLiveSince(lostSince, timeZone)}
         </span>
       ) : null}
     </span>

@@ -1,6 +1,7 @@
 import type { ReactNode } from 'react';
 import { Button } from './Button';
 import { Notice } from './Notice';
+import { notRead } from '../../words/ui';
 
 interface Props {
   /** Null while all is well: then nothing is shown. */
@@ -23,7 +24,7 @@ export function NotRead({ error, title, kind = 'stale', onRetry, children, class
       <Notice
         kind={kind}
         title={title}
-        action={onRetry && <Button onClick={() => void onRetry()}>Try again</Button>}
+        action={onRetry && <Button onClick={() => void onRetry()}>{notRead.tryAgain}</Button>}
       >
         {error.message}
         {children && <> {children}</>}

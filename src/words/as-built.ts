@@ -1,0 +1,163 @@
+import { counted, number } from '../drawings/numbers';
+
+export const asBuiltBoard = {
+  justAdded: 'just added',
+  commissioning: 'Commissioning',
+  asBuilt: 'As-built',
+  whatTheAsBuilt: 'What the as-built is made and checked with',
+  fromAFileOr: 'From a file or a paste',
+  readSerialsOnSite: 'Read serials on site',
+  roofPlan: 'Roof plan',
+  designChecks: 'Design checks',
+  history: 'History',
+  whatIsShownMay: 'What is shown may be old.',
+  theAsBuiltCould: 'The as-built could not be read anew',
+};
+
+export const partDialog = {
+  addA: (a: string) => `Add ${a}`,
+  itDidNotWork: 'It did not work',
+  keepWhatITyped: 'Keep what I typed and go on',
+  leaveTheirs: 'Leave theirs',
+  howManyAlike: 'How many alike',
+  namesAreCountedUp: 'Names are counted up: B1, B2, B3.',
+  eachOnTheNext: 'Each on the next input',
+  why: 'Why',
+  aFewWordsThey: 'A few words; they stay in the history.',
+  saving: 'Saving …',
+  save: 'Save',
+  addThe: (several: number, many: string, one: string) => `Add the ${several > 1 ? many : one}`,
+  delete: 'Delete …',
+  deleting: 'Deleting …',
+  deleteForGood: (label: string) => `Delete ${label} for good`,
+  close: 'Close',
+};
+
+export const partFields = {
+  none: 'None',
+  choose: 'Choose …',
+  mayStayEmpty: (field: string) => `${field} (may stay empty)`,
+  thereIsNoneYet: 'There is none yet.',
+};
+
+export const partsSheets = {
+  noYet: (many: string) => `No ${many} yet.`,
+  edit: 'Edit',
+  editOneRow: (one: string, row: string) => `Edit ${one} ${row}`,
+  addA: (a: string) => `Add ${a}`,
+  countedTestString: (test: number) => counted(test, 'string'),
+  planes: 'Planes',
+  tiltAzimuth: (surfaceTilt: string, surfaceAzimuth: string, built: string) =>
+    `tilt ${surfaceTilt}, azimuth ${surfaceAzimuth}; ${built}`,
+  inverters: 'Inverters',
+  typeNotInThe: 'type not in the catalogue',
+  countedInputsInput: (inputs: number) => counted(inputs, 'input'),
+  loggers: 'Loggers',
+  tokensAndWhatWas: 'Tokens, and what was refused',
+  lastSpoke: 'last spoke ',
+  hasNotSpokenYet: 'has not spoken yet',
+  noToken: 'no token',
+  hasAToken: 'has a token',
+  makeAToken: 'Make a token',
+  makeANewToken: 'Make a new token',
+  transmitters: 'Transmitters',
+  zoneBuiltStrings0: (built: undefined | string, strings: number, map: string) =>
+    `zone ${built ?? ''}; ${strings === 0 ? 'serves no string' : `serves ${map}`}`,
+  initiators: 'Initiators',
+  placeNotEntered: 'place not entered',
+  zones: 'Zones',
+  sensors: 'Sensors',
+  numberAtLogger: (n: number, logger: string | undefined, plane: string | undefined) =>
+    `number ${n} at ${logger ?? ''}${plane === undefined ? '' : `; ${plane}`}`,
+  site: 'Site',
+  notEntered: 'not entered',
+  editTheSite: 'Edit the site',
+};
+
+export const slotsDialog = {
+  stringWhich: (which: string) => `String ${which}`,
+  slotsFromTheNegative: (slots: number, gaps: number) =>
+    `${counted(slots, 'slot')} from the negative end on, ${gaps === 0 ? 'each with a serial' : `${gaps} without a serial`}. `,
+  zone: '; zone ',
+  editTheString: 'Edit the string',
+  readSerialsOnSite: 'Read serials on site',
+  history: 'History',
+  moduleTypesAndPlaces: 'Module types and places on the roof',
+  serialAtPosition: 'Serial at position ',
+  noSerialYet: 'No serial yet',
+  moduleTypeAtPosition: (position: number) => `Module type at position ${position}`,
+  placeOnTheRoof: (position: number) => `Place on the roof of position ${position}`,
+  upperRowFifthFrom: 'Upper row, fifth from the gable',
+  why: 'Why',
+  aFewWordsThey: 'A few words; they stay in the history with the units that were here.',
+  itDidNotWork: 'It did not work',
+  theyWereMovedHere: 'They were moved here: take them from there',
+  theRecordIsWrong: 'The record is wrong: correct the type',
+  keepWhatITyped: 'Keep what I typed and go on',
+  saved: 'Saved',
+  saving: 'Saving …',
+  saveTheSlots: 'Save the slots',
+  undoWhatITyped: 'Undo what I typed',
+  close: 'Close',
+};
+
+export const stringsSheet = {
+  all: 'All',
+  withoutSerials: 'Without serials',
+  string: 'String',
+  notSaved: 'not saved',
+  slotsWithASerial: 'Slots with a serial',
+  serials: 'Serials',
+  plane: 'Plane',
+  input: 'Input',
+  unitType: 'Unit type',
+  zone: 'Zone',
+  strings: 'Strings',
+  findAStringBy: 'Find a string by name, serial or place on the roof',
+  nameSerialOrPlace: 'Name, serial or place',
+  whichStrings: 'Which strings',
+  stringsOfThisSite: 'Strings of this site',
+  noStringFits: 'No string fits',
+  showAll: 'Show all',
+  noStringsYet: 'No strings yet',
+  enterFirstStringNames: (listedSaid: string) => `Enter ${listedSaid} first: a string names them.`,
+  severalAlikeAreEntered: 'Several alike are entered at once: their names are counted up.',
+  addA: (a: string) => `Add ${a}`,
+  openTheCatalogue: 'Open the catalogue',
+  addStrings: 'Add strings',
+};
+
+export const tokenDialog = {
+  tokenOfLogger: (serial: string) => `Token of logger ${serial}`,
+  aNewTokenEnds:
+    'A new token ends the one in force at once: the logger is refused until it has the new one. What it has not sent yet stays in it.',
+  withItsTokenThe: 'With its token the logger may report here.',
+  why: 'Why',
+  aFewWordsThey: 'A few words; they stay in the history.',
+  noTokenWasMade: 'No token was made',
+  making: 'Making …',
+  makeTheToken: 'Make the token',
+};
+
+export const asBuiltFindingWords = {
+  noStringsAreDrawn: 'No strings are drawn yet',
+  beforeStringCanBe: (listedSaid: string) => `Before a string can be entered, this site needs ${listedSaid}.`,
+  addStringsHereOr: 'Add strings here, or read them from a file.',
+  countedStringsString: (strings: number) => counted(strings, 'string'),
+  countedSlotsSlot: (slots: number) => counted(slots, 'slot'),
+  everySlotHasA: 'every slot has a serial',
+  noSlotHasA: 'no slot has a serial yet',
+  noSerial: (gaps: number) => `${number(gaps)} ${gaps === 1 ? 'slot has' : 'slots have'} no serial`,
+  loggerHasNoToken: (map: string) => `Logger ${map} has no token and cannot report. Make one.`,
+  aUnitWhoseSerial:
+    'A unit whose serial is not here is heard at the roll call as unknown. Type them, read them on site, or take them from a file.',
+  goOnWithThe: 'Go on with the design checks, then with the roll call.',
+  aUnitTypeIn: 'a unit type in the catalogue',
+  aModuleTypeIn: 'a module type in the catalogue',
+  aPlane: 'a plane',
+  anInverter: 'an inverter',
+  aZone: 'a zone',
+  aTransmitter: 'a transmitter',
+  aLoggerOrA: 'a logger or a transmitter',
+  wordsAndAt: (words: string, at: undefined | string) => `${words} and ${at ?? ''}`,
+};

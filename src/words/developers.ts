@@ -1,0 +1,20 @@
+export const developers = {
+  operations: 'Operations',
+  findAnOperationA: 'Find an operation, a parameter or a field',
+  ofOperations: (shown: number, operations: number) => `${shown} of ${operations} operations`,
+  searchForAThing: 'Search for a thing (unit, event), a parameter (cursor) or a field (voltage).',
+  nothingHereHasIn: (q: string) => `Nothing here has “${q}” in it`,
+  theExampleOfIs: (path: string) => `The example of ${path} is on your clipboard.`,
+};
+
+export const operationSheet = {
+  scope: 'scope ',
+  anyToken: 'any token',
+  itTakes: 'It takes',
+  itAnswers: 'It answers',
+  fields: 'Fields',
+  needed: ', needed',
+  exampleForAShell: 'Example for a shell',
+  copied: 'Copied',
+  copyTheExample: 'Copy the example',
+};

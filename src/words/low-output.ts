@@ -1,0 +1,38 @@
+import { number } from '../drawings/numbers';
+
+export const lowOutputPage = {
+  lossKWhDayLowToLossKWhDayHigh: (lossKWhDayLow: number, lossKWhDayHigh: number) =>
+    `${number(lossKWhDayLow, 1)} to ${number(lossKWhDayHigh, 1)}`,
+  string: 'String',
+  site: 'Site',
+  lossADay: 'Loss a day',
+  worthADay: 'Worth a day',
+  missing: 'Missing',
+  since: 'Since',
+  judgedAfter: (day: string) => `judged after ${day}`,
+  whatItLooksLike: 'What it looks like',
+  plane: 'Plane',
+  confidence: 'Confidence',
+  bySiblings: 'by siblings',
+  byTheModel: 'by the model',
+  input: ', input',
+  case: 'Case',
+  caseOpenCase: (openCase: number) => `Case ${openCase}`,
+  openACase: 'Open a case',
+  causes: 'Causes',
+  lowStrings: 'Low strings',
+  strings: 'Strings',
+  rowsOfRows: (rows: number, rows2: number) => `${rows} of ${rows2}`,
+  findBySiteString: 'Find by site, string, plane or words',
+  siteStringPlane: 'Site, string, plane',
+  all: 'all',
+  looksLike: 'Looks like',
+  anything: 'anything',
+  withOrWithout: 'with or without',
+  withACase: 'with a case',
+  withoutACase: 'without a case',
+  stringsThatMakeLess: 'Strings that make less than they should',
+  noLowStringIs: 'No low string is like that. Take a filter away.',
+  asEachStringsNewest:
+    'As each string’s newest judged day found it, over the last five days with enough sun; figures of loss with their middle 90 %. Held against the strings of its plane, or against the model where fewer than five are alike.',
+};

@@ -1,0 +1,18 @@
+export const savedViewsWords = {
+  nameOfTheView: 'Name of the view',
+  shareItWithEverybody: 'Share it with everybody of the organisation',
+  theViewWasNot: 'The view was not saved',
+  saving: 'Saving …',
+  saveTheView: 'Save the view',
+  shared: 'shared',
+  byBy: (by: string) => `by ${by}`,
+  unshareView: (view: string) => `Unshare “${view}”`,
+  shareView: (view: string) => `Share “${view}”`,
+  keepToMyself: 'Keep to myself',
+  shareWithTheOrganisation: 'Share with the organisation',
+  unshare: 'Unshare',
+  share: 'Share',
+  removeTheView: (view: string) => `Remove the view “${view}”`,
+  saveThisView: 'Save this view',
+  theViewStandsAs: 'The view stands as it was',
+};
