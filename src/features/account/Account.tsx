@@ -10,6 +10,7 @@ import { EmailForm, PasswordForm } from './CredentialForms';
 import { SecondFactor } from './SecondFactor';
 import { Sessions } from './Sessions';
 import { Tokens } from './Tokens';
+import { accountWords } from '../../words/account';
 
 const KEY = ['account'];
 
@@ -29,12 +30,13 @@ export function Account({ initial, tokens }: { initial: AccountPage; tokens: Tok
   return (
     <>
       <Heading
-        finding={
-          others === 0
-            ? 'You are signed in on this device only'
-            : `You are signed in on ${others + 1} devices`
-        }
-        sentence={`${page.person.name}, ${page.person.role} of ${page.person.organisation}. You sign in with ${page.person.email}.`}
+        finding={others === 0 ? accountWords.youAreSignedIn : accountWords.youAreSignedInOn(others)}
+        sentence={accountWords.ofYouSignIn(
+          page.person.name,
+          page.person.role,
+          page.person.organisation,
+          page.person.email,
+        )}
       />
       <div className="grid gap-5 lg:grid-cols-2">
         <div className="grid content-start gap-5">
@@ -43,10 +45,10 @@ export function Account({ initial, tokens }: { initial: AccountPage; tokens: Tok
           {tokens && <Tokens initial={tokens} timeZone={page.person.timeZone} />}
         </div>
         <div className="grid content-start gap-5">
-          <Sheet id="password" title="Password">
+          <Sheet id="password" title={accountWords.password}>
             <PasswordForm email={page.person.email} onChanged={again} />
           </Sheet>
-          <Sheet id="email" title="Address">
+          <Sheet id="email" title={accountWords.address}>
             <EmailForm email={page.person.email} />
           </Sheet>
         </div>

@@ -5,6 +5,7 @@ import { Notice } from '../../components/ui/Notice';
 import { PASSWORD_MIN } from '../../domain/access/password';
 import { paths } from '../../schemas/paths';
 import { useSending } from './send';
+import { credentialForms } from '../../words/account';
 
 /** What was wrong with the whole, where no field carries it. */
 function Whole({
@@ -46,12 +47,10 @@ export function PasswordForm({ email, onChanged }: { email: string; onChanged: (
       }}
     >
       <input type="hidden" autoComplete="username" value={email} />
-      {done && !fault && (
-        <Notice kind="done" title="Your password is changed; other devices were signed out." />
-      )}
+      {done && !fault && <Notice kind="done" title={credentialForms.yourPasswordIsChanged} />}
       <Whole fault={fault} fields={['current', 'password']} />
       <Field
-        label="Current password"
+        label={credentialForms.currentPassword}
         type="password"
         autoComplete="current-password"
         value={current}
@@ -59,17 +58,17 @@ export function PasswordForm({ email, onChanged }: { email: string; onChanged: (
         onChange={(event) => setCurrent(event.target.value)}
       />
       <Field
-        label="New password"
+        label={credentialForms.newPassword}
         type="password"
         autoComplete="new-password"
         value={password}
-        hint={`At least ${PASSWORD_MIN} characters. Three or four words do well.`}
+        hint={credentialForms.atLeastCharactersThree(PASSWORD_MIN)}
         error={fault?.fault('password')}
         onChange={(event) => setPassword(event.target.value)}
       />
       <div>
         <Button type="submit" weight="primary" disabled={busy}>
-          Change the password
+          {credentialForms.changeThePassword}
         </Button>
       </div>
     </form>
@@ -101,13 +100,13 @@ export function EmailForm({ email }: { email: string }) {
       }}
     >
       {sentTo && !fault && (
-        <Notice kind="done" title={`A letter is on its way to ${sentTo}`}>
-          Your address changes when the link in it is used. Until then you sign in with {email}.
+        <Notice kind="done" title={credentialForms.letterIsOnIts(sentTo)}>
+          {credentialForms.yourAddressChangesWhen(email)}
         </Notice>
       )}
       <Whole fault={fault} fields={['current', 'email']} />
       <Field
-        label="New address"
+        label={credentialForms.newAddress}
         type="email"
         autoComplete="email"
         value={wanted}
@@ -115,7 +114,7 @@ export function EmailForm({ email }: { email: string }) {
         onChange={(event) => setWanted(event.target.value)}
       />
       <Field
-        label="Current password"
+        label={credentialForms.currentPassword}
         type="password"
         autoComplete="current-password"
         value={current}
@@ -124,7 +123,7 @@ export function EmailForm({ email }: { email: string }) {
       />
       <div>
         <Button type="submit" disabled={busy}>
-          Send the letter
+          {credentialForms.sendTheLetter}
         </Button>
       </div>
     </form>

@@ -4,10 +4,10 @@ import { Field } from '../../components/ui/Field';
 import { Notice } from '../../components/ui/Notice';
 import { Sheet } from '../../components/ui/Sheet';
 import { SiteTime } from '../../components/ui/Time';
-import { counted } from '../../drawings/numbers';
 import { paths } from '../../schemas/paths';
 import type { AccountPage, SecondFactorBegun } from '../../schemas/api/my-account';
 import { useSending } from './send';
+import { secondFactorWords } from '../../words/account';
 
 type Stage =
   | { kind: 'rest' }
@@ -25,21 +25,22 @@ export function SecondFactor({ page, onChanged }: { page: AccountPage; onChanged
     onChanged();
   };
   return (
-    <Sheet id="second-factor" title="Second factor">
+    <Sheet id="second-factor" title={secondFactorWords.secondFactor}>
       {stage.kind === 'rest' && (
         <>
           <p>
             {since ? (
               <>
-                In force since <SiteTime at={since} now={page.at} timeZone={page.person.timeZone} />.{' '}
-                {counted(recoveryCodesLeft, 'recovery code')} left.
+                {secondFactorWords.inForceSince}
+                <SiteTime at={since} now={page.at} timeZone={page.person.timeZone} />
+                {secondFactorWords.recoveryCodesLeftLeft(recoveryCodesLeft)}
               </>
             ) : (
-              'None. With one, sign-in also asks for a code that an authenticator on your phone shows.'
+              secondFactorWords.noneWithOneSign
             )}
           </p>
           <Button className="mt-3" onClick={() => setStage({ kind: since ? 'end' : 'begin' })}>
-            {since ? 'End it' : 'Set one up'}
+            {since ? secondFactorWords.endIt : secondFactorWords.setOneUp}
           </Button>
         </>
       )}
@@ -60,20 +61,19 @@ export function SecondFactor({ page, onChanged }: { page: AccountPage; onChanged
       )}
       {stage.kind === 'codes' && (
         <>
-          <Notice kind="done" title="The second factor is in force">
-            Keep these recovery codes where you will find them without your phone. Each works once; they are
-            not shown again.
+          <Notice kind="done" title={secondFactorWords.theSecondFactorIs}>
+            {secondFactorWords.keepTheseRecoveryCodes}
           </Notice>
           <ul
             className="mt-3 grid grid-cols-2 gap-x-6 gap-y-1 font-mono text-[15px]"
-            aria-label="Recovery codes"
+            aria-label={secondFactorWords.recoveryCodes}
           >
             {stage.codes.map((code) => (
               <li key={code}>{code}</li>
             ))}
           </ul>
           <Button className="mt-3" weight="primary" onClick={rest}>
-            I have kept them
+            {secondFactorWords.iHaveKeptThem}
           </Button>
         </>
       )}
@@ -112,7 +112,7 @@ function WithPassword({
       }}
     >
       <Field
-        label="Your password"
+        label={secondFactorWords.yourPassword}
         type="password"
         autoComplete="current-password"
         autoFocus
@@ -122,9 +122,9 @@ function WithPassword({
       />
       <div className="mt-3 flex gap-2">
         <Button type="submit" weight="primary" disabled={busy}>
-          {ending ? 'End the second factor' : 'Go on'}
+          {ending ? secondFactorWords.endTheSecondFactor : secondFactorWords.goOn}
         </Button>
-        <Button onClick={onCancel}>Leave it</Button>
+        <Button onClick={onCancel}>{secondFactorWords.leaveIt}</Button>
       </div>
     </form>
   );
@@ -153,17 +153,18 @@ function Confirm({
         void go();
       }}
     >
-      <p>Read this picture with your authenticator, then type the code that it shows.</p>
+      <p>{secondFactorWords.readThisPictureWith}</p>
       <img
-        alt="Code for your authenticator; the secret below says the same"
+        alt={secondFactorWords.codeForYourAuthenticator}
         src={`data:image/svg+xml,${encodeURIComponent(begun.picture)}`}
         className="my-3 h-[180px] w-[180px] bg-[#fff]"
       />
       <p className="mb-3 break-all text-sm text-ink-2">
-        Or type in the secret <span className="font-mono">{begun.secret}</span>
+        {secondFactorWords.orTypeInThe}
+        <span className="font-mono">{begun.secret}</span>
       </p>
       <Field
-        label="Code"
+        label={secondFactorWords.code}
         inputMode="numeric"
         autoComplete="one-time-code"
         maxLength={10}
@@ -173,9 +174,9 @@ function Confirm({
       />
       <div className="mt-3 flex gap-2">
         <Button type="submit" weight="primary" disabled={busy}>
-          Put it in force
+          {secondFactorWords.putItInForce}
         </Button>
-        <Button onClick={onCancel}>Leave it</Button>
+        <Button onClick={onCancel}>{secondFactorWords.leaveIt}</Button>
       </div>
     </form>
   );

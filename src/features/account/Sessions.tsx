@@ -3,10 +3,10 @@ import { Button } from '../../components/ui/Button';
 import { Sheet } from '../../components/ui/Sheet';
 import { Tag } from '../../components/ui/Tag';
 import { RelativeTime } from '../../components/ui/Time';
-import { counted } from '../../drawings/numbers';
 import { paths } from '../../schemas/paths';
 import type { AccountPage } from '../../schemas/api/my-account';
 import { useSending } from './send';
+import { sessionsWords } from '../../words/account';
 
 /** So many devices are seen at once, the newest first. */
 const FEW = 8;
@@ -21,7 +21,7 @@ export function Sessions({ page, onChanged }: { page: AccountPage; onChanged: ()
     onChanged();
   };
   return (
-    <Sheet id="sessions" title="Where you are signed in">
+    <Sheet id="sessions" title={sessionsWords.whereYouAreSigned}>
       {fault && (
         <p role="alert" className="mb-2 font-medium text-rust-ink">
           {fault.message}
@@ -33,15 +33,15 @@ export function Sessions({ page, onChanged }: { page: AccountPage; onChanged: ()
             <div className="min-w-0">
               <p className="font-medium">{s.device}</p>
               <p className="text-sm text-ink-2">
-                {s.address ? `from ${s.address}, ` : ''}used{' '}
+                {sessionsWords.addressFromAddressUsed(s.address)}
                 <RelativeTime at={s.usedAt} now={page.at} timeZone={page.person.timeZone} />
               </p>
             </div>
             {s.here ? (
-              <Tag tone="petrol">this device</Tag>
+              <Tag tone="petrol">{sessionsWords.thisDevice}</Tag>
             ) : (
               <Button disabled={busy} onClick={() => void end(s.key)}>
-                Sign it out
+                {sessionsWords.signItOut}
               </Button>
             )}
           </li>
@@ -50,12 +50,12 @@ export function Sessions({ page, onChanged }: { page: AccountPage; onChanged: ()
       <div className="mt-3 flex flex-wrap gap-2 empty:hidden">
         {others.length > 1 && (
           <Button disabled={busy} onClick={() => void end()}>
-            Sign out everywhere else
+            {sessionsWords.signOutEverywhereElse}
           </Button>
         )}
         {!all && page.sessions.length > FEW && (
           <Button onClick={() => setAll(true)}>
-            Show {counted(page.sessions.length - FEW, 'more device')}
+            {sessionsWords.showSessions(page.sessions.length, FEW)}
           </Button>
         )}
       </div>

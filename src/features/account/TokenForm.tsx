@@ -3,10 +3,10 @@ import { Button } from '../../components/ui/Button';
 import { Choice } from '../../components/ui/Choice';
 import { Field } from '../../components/ui/Field';
 import { SCOPE_WORDS, TOKEN_DAYS, TOKEN_SCOPES, type TokenScope } from '../../domain/access/scopes';
-import { counted } from '../../drawings/numbers';
 import { paths } from '../../schemas/paths';
 import type { MadeToken, TokensPage } from '../../schemas/api/tokens';
 import { useSending } from './send';
+import { tokenForm } from '../../words/account';
 
 interface Typed {
   name: string;
@@ -52,8 +52,8 @@ export function TokenForm({
         </p>
       )}
       <Field
-        label="Name"
-        hint="What will use it, so that you know it again."
+        label={tokenForm.name}
+        hint={tokenForm.whatWillUseIt}
         value={typed.name}
         autoComplete="off"
         maxLength={80}
@@ -61,7 +61,7 @@ export function TokenForm({
         onChange={(event) => change({ name: event.target.value })}
       />
       <Checks
-        legend="What it may do"
+        legend={tokenForm.whatItMayDo}
         options={TOKEN_SCOPES.map((scope) => ({ value: scope, label: SCOPE_WORDS[scope] }))}
         chosen={typed.scopes}
         error={faultOf('scopes')}
@@ -69,13 +69,15 @@ export function TokenForm({
       />
       <details className="border-b border-t border-rule">
         <summary className="flex min-h-[44px] cursor-pointer items-center justify-between gap-3">
-          <span className="font-medium">Sites</span>
+          <span className="font-medium">{tokenForm.sites}</span>
           <span className="text-sm text-ink-2">
-            {typed.sites.length === 0 ? 'every site that you see' : counted(typed.sites.length, 'site')}
+            {typed.sites.length === 0
+              ? tokenForm.everySiteThatYou
+              : tokenForm.countedSitesSite(typed.sites.length)}
           </span>
         </summary>
         <Checks
-          legend="Only these sites"
+          legend={tokenForm.onlyTheseSites}
           options={sites.map((s) => ({ value: s.id, label: s.name }))}
           chosen={typed.sites}
           error={faultOf('sites')}
@@ -84,14 +86,14 @@ export function TokenForm({
         />
       </details>
       <Choice
-        label="Holds for"
-        options={TOKEN_DAYS.map((days) => ({ value: String(days), label: `${days} days` }))}
+        label={tokenForm.holdsFor}
+        options={TOKEN_DAYS.map((days) => ({ value: String(days), label: tokenForm.daysDays(days) }))}
         value={String(typed.days)}
         error={faultOf('days')}
         onChange={(days) => change({ days: Number(days) })}
       />
       <Field
-        label="Your password"
+        label={tokenForm.yourPassword}
         type="password"
         autoComplete="current-password"
         value={typed.current}
@@ -100,7 +102,7 @@ export function TokenForm({
       />
       <div>
         <Button type="submit" weight="primary" disabled={busy}>
-          Make the token
+          {tokenForm.makeTheToken}
         </Button>
       </div>
     </form>

@@ -6,20 +6,23 @@ import { Notice } from '../../components/ui/Notice';
 import { Sheet } from '../../components/ui/Sheet';
 import { Tag } from '../../components/ui/Tag';
 import { RelativeTime, SiteTime } from '../../components/ui/Time';
-import { counted, listed } from '../../drawings/numbers';
+import { listed } from '../../drawings/numbers';
 import { api } from '../../lib/api';
 import { queryClient } from '../../lib/query-client';
 import { paths } from '../../schemas/paths';
 import type { MadeToken, TokenItem, TokensPage } from '../../schemas/api/tokens';
 import { useSending } from './send';
 import { TokenForm } from './TokenForm';
+import { tokensWords } from '../../words/account';
 
 const KEY = ['account', 'tokens'];
 
 type Open = { kind: 'make' } | { kind: 'made'; made: MadeToken } | { kind: 'end'; token: TokenItem };
 
 const titleOf = (open: Open): string =>
-  ({ make: 'Make a token', made: 'Your new token', end: 'End this token?' })[open.kind];
+  ({ make: tokensWords.makeAToken, made: tokensWords.yourNewToken, end: tokensWords.endThisToken })[
+    open.kind
+  ];
 
 /** Tokens by which programs of one's own read and write. */
 export function Tokens({ initial, timeZone }: { initial: TokensPage; timeZone: string }) {
@@ -41,10 +44,10 @@ export function Tokens({ initial, timeZone }: { initial: TokensPage; timeZone: s
   return (
     <Sheet
       id="tokens"
-      title="Tokens"
+      title={tokensWords.tokens}
       aside={
         <a href={paths.developers()} className="link">
-          What a program can ask for
+          {tokensWords.whatAProgramCan}
         </a>
       }
     >
@@ -52,22 +55,20 @@ export function Tokens({ initial, timeZone }: { initial: TokensPage; timeZone: s
         {done && <Notice kind="done" title={done} />}
       </div>
       {page.tokens.length === 0 ? (
-        <p>
-          None. A token lets a program of yours read from Wakeline, and never do more than you may yourself.
-        </p>
+        <p>{tokensWords.noneATokenLets}</p>
       ) : (
         <ul className="divide-y divide-rule-faint">
           {page.tokens.map((t) => (
             <li key={t.id} className="flex flex-wrap items-center justify-between gap-x-4 gap-y-1 py-2.5">
               <TokenLine token={t} at={page.at} timeZone={timeZone} />
               <Button
-                aria-label={`End the token ${t.name}`}
+                aria-label={tokensWords.endTheToken(t.name)}
                 onClick={() => {
                   setDone('');
                   setOpen({ kind: 'end', token: t });
                 }}
               >
-                End it
+                {tokensWords.endIt}
               </Button>
             </li>
           ))}
@@ -80,7 +81,7 @@ export function Tokens({ initial, timeZone }: { initial: TokensPage; timeZone: s
           setOpen({ kind: 'make' });
         }}
       >
-        Make a token
+        {tokensWords.makeAToken}
       </Button>
       {/* one dialog whose content follows: one that closes would take the next one with it */}
       <Dialog open={open !== null} title={open ? titleOf(open) : ''} onClose={close}>
@@ -93,7 +94,7 @@ export function Tokens({ initial, timeZone }: { initial: TokensPage; timeZone: s
             token={open.token}
             onLeft={close}
             onEnded={() => {
-              setDone(`The token ${open.token.name} has ended.`);
+              setDone(tokensWords.theTokenHasEnded(open.token.name));
               close();
             }}
           />
@@ -109,21 +110,23 @@ function TokenLine({ token, at, timeZone }: { token: TokenItem; at: string; time
       <p className="flex flex-wrap items-baseline gap-x-2 font-medium">
         <span className="[overflow-wrap:anywhere]">{token.name}</span>
         <span className="font-mono text-sm font-normal text-ink-2">…{token.ending}</span>
-        {token.expired && <Tag tone="outline">ran out</Tag>}
+        {token.expired && <Tag tone="outline">{tokensWords.ranOut}</Tag>}
       </p>
       <p className="text-sm text-ink-2">
-        {token.scopes.join(', ')}; {token.sites === null ? 'every site' : sitesWords(token.sites)}
+        {token.scopes.join(', ')}; {token.sites === null ? tokensWords.everySite : sitesWords(token.sites)}
       </p>
       <p className="text-sm text-ink-2">
         {token.lastUsedAt ? (
           <>
-            Used <RelativeTime at={token.lastUsedAt} now={at} timeZone={timeZone} />
-            {token.lastAddress && ` from ${token.lastAddress}`}
+            {tokensWords.used}
+            <RelativeTime at={token.lastUsedAt} now={at} timeZone={timeZone} />
+            {token.lastAddress && tokensWords.fromLastAddress(token.lastAddress)}
           </>
         ) : (
-          'Not used yet'
+          tokensWords.notUsedYet
         )}
-        . {token.expired ? 'Ran' : 'Runs'} out <SiteTime at={token.expiresAt} now={at} timeZone={timeZone} />.
+        {tokensWords.expiredOut(token.expired)}
+        <SiteTime at={token.expiresAt} now={at} timeZone={timeZone} />.
       </p>
     </div>
   );
@@ -131,20 +134,17 @@ function TokenLine({ token, at, timeZone }: { token: TokenItem; at: string; time
 
 const FEW = 3;
 const sitesWords = (sites: readonly string[]): string =>
-  sites.length > FEW ? counted(sites.length, 'site') : listed(sites);
+  sites.length > FEW ? tokensWords.countedSitesSite(sites.length) : listed(sites);
 
 /** The token, this once. */
 function Made({ made, onKept }: { made: MadeToken; onKept: () => void }) {
   const [copied, setCopied] = useState<boolean | null>(null);
   return (
     <>
-      <p>
-        Keep it where your program finds it and nobody else does. It is not shown again: Wakeline has only its
-        hash.
-      </p>
+      <p>{tokensWords.keepItWhereYour}</p>
       <p
         className="my-3 select-all break-all border border-rule bg-film px-3 py-2.5 font-mono text-[15px]"
-        aria-label="The token"
+        aria-label={tokensWords.theToken}
         role="textbox"
         aria-readonly="true"
         tabIndex={0}
@@ -152,8 +152,8 @@ function Made({ made, onKept }: { made: MadeToken; onKept: () => void }) {
         {made.token}
       </p>
       <p role="status" className="mb-3 text-sm text-ink-2 empty:hidden">
-        {copied === true && 'It is on your clipboard.'}
-        {copied === false && 'Your browser did not allow it. Select the token and copy it.'}
+        {copied === true && tokensWords.itIsOnYour}
+        {copied === false && tokensWords.yourBrowserDidNot}
       </p>
       <div className="flex flex-wrap gap-2">
         <Button
@@ -164,10 +164,10 @@ function Made({ made, onKept }: { made: MadeToken; onKept: () => void }) {
             );
           }}
         >
-          Copy it
+          {tokensWords.copyIt}
         </Button>
         <Button weight="primary" onClick={onKept}>
-          I have kept it
+          {tokensWords.iHaveKeptIt}
         </Button>
       </div>
     </>
@@ -183,8 +183,9 @@ function EndForm({ token, onEnded, onLeft }: { token: TokenItem; onEnded: () => 
   return (
     <>
       <p>
-        The program that uses <strong className="font-semibold">{token.name}</strong> is refused from that
-        moment. It can’t be undone; a new one can be made.
+        {tokensWords.theProgramThatUses}
+        <strong className="font-semibold">{token.name}</strong>
+        {tokensWords.isRefusedFromThat}
       </p>
       {fault && (
         <p role="alert" className="mt-3 font-medium text-rust-ink">
@@ -193,9 +194,9 @@ function EndForm({ token, onEnded, onLeft }: { token: TokenItem; onEnded: () => 
       )}
       <div className="mt-4 flex gap-2">
         <Button weight="primary" disabled={busy} onClick={() => void end()}>
-          End the token
+          {tokensWords.endTheToken2}
         </Button>
-        <Button onClick={onLeft}>Leave it</Button>
+        <Button onClick={onLeft}>{tokensWords.leaveIt}</Button>
       </div>
     </>
   );

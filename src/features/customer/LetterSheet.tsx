@@ -4,17 +4,18 @@ import { Sheet } from '../../components/ui/Sheet';
 import { ApiError, api } from '../../lib/api';
 import type { LetterChoice } from '../../schemas/api/customer';
 import { paths } from '../../schemas/paths';
+import { letterSheet } from '../../words/customer';
 
 type Shown = 'none' | 'week' | 'month';
 const CHOICES = [
-  { value: 'none', label: 'No letter' },
-  { value: 'week', label: 'Each week' },
-  { value: 'month', label: 'Each month' },
+  { value: 'none', label: letterSheet.noLetter },
+  { value: 'week', label: letterSheet.eachWeek },
+  { value: 'month', label: letterSheet.eachMonth },
 ] as const;
 const SAYS: Record<Shown, string> = {
-  none: 'No letter is sent to you about this roof.',
-  week: 'A letter comes on Mondays, about the week before.',
-  month: 'A letter comes on the first of the month, about the month before.',
+  none: letterSheet.noLetterIsSent,
+  week: letterSheet.aLetterComesOn,
+  month: letterSheet.aLetterComesOnThe,
 };
 
 /** What the roof made, by mail, as often as its owner wants. */
@@ -30,13 +31,15 @@ export function LetterSheet({ siteId, initial }: { siteId: string; initial: Lett
       setSays(SAYS[wanted]);
     } catch (error) {
       setEvery(before);
-      setSays(error instanceof ApiError ? `Not changed: ${error.message}` : 'Not changed. Try again.');
+      setSays(
+        error instanceof ApiError ? letterSheet.notChanged(error.message) : letterSheet.notChangedTryAgain,
+      );
     }
   };
   return (
-    <Sheet id="letter" title="A letter about this roof" className="no-print">
+    <Sheet id="letter" title={letterSheet.aLetterAboutThis} className="no-print">
       <Segmented
-        label="How often"
+        label={letterSheet.howOften}
         name="letter"
         options={CHOICES}
         value={every}

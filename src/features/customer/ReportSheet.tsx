@@ -2,10 +2,10 @@ import { useState } from 'react';
 import { Button } from '../../components/ui/Button';
 import { Notice } from '../../components/ui/Notice';
 import { Sheet } from '../../components/ui/Sheet';
-import { longDate } from '../../drawings/times';
 import { ApiError, api } from '../../lib/api';
 import type { CaseReport, ReportedCase } from '../../schemas/api/cases';
 import { paths } from '../../schemas/paths';
+import { reportSheet } from '../../words/customer';
 
 interface Props {
   siteId: string;
@@ -15,10 +15,10 @@ interface Props {
 }
 
 const STANDS: Record<ReportedCase['state'], string> = {
-  open: 'being looked at',
-  waiting: 'being looked at; waiting for a part or a visit',
-  done: 'done',
-  no_fault_found: 'looked at: no fault was found',
+  open: reportSheet.beingLookedAt,
+  waiting: reportSheet.beingLookedAtWaiting,
+  done: reportSheet.done,
+  no_fault_found: reportSheet.lookedAtNoFault,
 };
 
 /** "Something looks wrong": the owner's own words go to whoever looks after the roof, with the figures of that minute. */
@@ -41,20 +41,13 @@ export function ReportSheet({ siteId, timeZone, organisation, initial }: Props) 
       setRef(newRef());
       setSent(true);
     } catch (error) {
-      setFault(
-        error instanceof ApiError
-          ? (error.fault('what') ?? error.message)
-          : 'It could not be sent. What you wrote is still here; try again.',
-      );
+      setFault(error instanceof ApiError ? (error.fault('what') ?? error.message) : reportSheet.itCouldNotBe);
     }
     setBusy(false);
   };
   return (
-    <Sheet id="report" title="Something looks wrong?" className="no-print">
-      <p>
-        Say what you see. {organisation} gets it at once, with what your roof is doing at this minute. In an
-        emergency call the emergency services, and keep away from modules and cables.
-      </p>
+    <Sheet id="report" title={reportSheet.somethingLooksWrong} className="no-print">
+      <p>{reportSheet.sayWhatYouSee(organisation)}</p>
       <form
         className="mt-3"
         onSubmit={(event) => {
@@ -63,7 +56,7 @@ export function ReportSheet({ siteId, timeZone, organisation, initial }: Props) 
         }}
       >
         <label htmlFor="report-what" className="mb-1 block font-medium">
-          What looks wrong
+          {reportSheet.whatLooksWrong}
         </label>
         <textarea
           id="report-what"
@@ -81,27 +74,26 @@ export function ReportSheet({ siteId, timeZone, organisation, initial }: Props) 
           </p>
         )}
         <Button type="submit" weight="primary" disabled={busy || what.trim() === ''} className="mt-2">
-          {busy ? 'Sending' : `Send to ${organisation}`}
+          {busy ? reportSheet.sending : reportSheet.sendTo(organisation)}
         </Button>
       </form>
       {sent && (
         <div className="mt-3">
-          <Notice kind="done" title={`Sent: ${organisation} has it`}>
-            How it stands is shown below.
+          <Notice kind="done" title={reportSheet.sentHasIt(organisation)}>
+            {reportSheet.howItStandsIs}
           </Notice>
         </div>
       )}
       {reports.length > 0 && (
         <ul
           className="mt-4 divide-y divide-rule-faint border-t border-rule-faint"
-          aria-label="What you reported"
+          aria-label={reportSheet.whatYouReported}
         >
           {reports.map((r) => (
             <li key={r.id} className="py-3">
               <p className="whitespace-pre-line break-words">{r.what}</p>
               <p className="mt-1 text-sm text-ink-2">
-                {longDate(r.at, timeZone)}, number {r.number}: {STANDS[r.state]}
-                {r.closedAt ? ` since ${longDate(r.closedAt, timeZone)}` : ''}
+                {reportSheet.atNumberNAt(r.at, timeZone, r.number, STANDS[r.state], r.closedAt)}
               </p>
             </li>
           ))}

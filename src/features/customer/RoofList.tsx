@@ -3,6 +3,7 @@ import type { CustomerSites } from '../../schemas/api/customer';
 import { Notice } from '../../components/ui/Notice';
 import { Sheet } from '../../components/ui/Sheet';
 import { customerWords } from './words';
+import { roofList } from '../../words/customer';
 
 const NO_DAY = { energy: null, clearEnergySoFar: 0 };
 
@@ -10,8 +11,8 @@ const NO_DAY = { energy: null, clearEnergySoFar: 0 };
 export function RoofList({ sites, organisation }: { sites: CustomerSites; organisation: string }) {
   if (sites.length === 0)
     return (
-      <Notice kind="empty" title="No roof has been given to you yet">
-        Ask {organisation} to give you access to yours.
+      <Notice kind="empty" title={roofList.noRoofHasBeen}>
+        {roofList.askToGiveYou(organisation)}
       </Notice>
     );
   return (

@@ -1,7 +1,7 @@
 import { useQuery } from '@tanstack/react-query';
 import { Caution } from '../../components/ui/Caution';
 import { Sheet } from '../../components/ui/Sheet';
-import { clock, longDate, zoneName } from '../../drawings/times';
+import { longDate } from '../../drawings/times';
 import { api } from '../../lib/api';
 import { queryClient } from '../../lib/query-client';
 import { clocksDiffer, useReaderZone } from '../../components/ui/reader-zone';
@@ -21,6 +21,7 @@ import {
 import { FigureSheet } from '../../components/ui/FigureSheet';
 import { TodaySheet } from './TodaySheet';
 import { customerWords } from './words';
+import { roofPage } from '../../words/customer';
 
 /** How often the page reads itself again. */
 const EVERY_MS = 30_000;
@@ -29,7 +30,7 @@ const EVERY_MS = 30_000;
 function Papers({ roof }: { roof: CustomerSite }) {
   if (roof.papers.length === 0 && roof.months.length === 0) return null;
   return (
-    <Sheet id="papers" title="Papers">
+    <Sheet id="papers" title={roofPage.papers}>
       <HandoverPapers roof={roof} />
       <MonthReports roof={roof} />
     </Sheet>
@@ -44,16 +45,16 @@ function MonthReports({ roof }: { roof: CustomerSite }) {
       href={paths.api.customerMonth(roof.site.id, month)}
       className="inline-flex min-h-[44px] items-center text-petrol hover:underline"
     >
-      {monthWords(month)}, PDF
+      {roofPage.monthPDF(monthWords(month))}
     </a>
   );
   return (
     <div className="mt-2">
-      <p>What your roof made, month by month:</p>
+      <p>{roofPage.whatYourRoofMade}</p>
       <p>{link(newest)}</p>
       {earlier.length > 0 && (
         <details>
-          <summary className="target cursor-pointer text-petrol">Earlier months</summary>
+          <summary className="target cursor-pointer text-petrol">{roofPage.earlierMonths}</summary>
           <ul className="grid grid-cols-2 gap-x-4 sm:grid-cols-3">
             {earlier.map((month) => (
               <li key={month}>{link(month)}</li>
@@ -72,21 +73,18 @@ function HandoverPapers({ roof }: { roof: CustomerSite }) {
   const day = (paper: CustomerSite['papers'][number]) => longDate(paper.madeAt, roof.site.timeZone);
   return (
     <>
-      <p>
-        How your system is built, what was measured, and how to look after it, as of {day(newest)}. Keep a
-        copy where the people who work on the roof will find it.
-      </p>
+      <p>{roofPage.howYourSystemIs(day(newest))}</p>
       <p className="mt-2">
         <a
           href={file(newest)}
           className="inline-flex min-h-[44px] items-center font-semibold text-petrol hover:underline"
         >
-          Handover papers, PDF
+          {roofPage.handoverPapersPDF}
         </a>
       </p>
       {earlier.length > 0 && (
         <details>
-          <summary className="target cursor-pointer text-petrol">Earlier versions</summary>
+          <summary className="target cursor-pointer text-petrol">{roofPage.earlierVersions}</summary>
           <ul>
             {earlier.map((paper) => (
               <li key={paper.ref}>
@@ -94,7 +92,7 @@ function HandoverPapers({ roof }: { roof: CustomerSite }) {
                   href={file(paper)}
                   className="inline-flex min-h-[44px] items-center text-petrol hover:underline"
                 >
-                  Version {paper.version}, {day(paper)}
+                  {roofPage.versionVersionPaper(paper.version, day(paper))}
                 </a>
               </li>
             ))}
@@ -135,12 +133,13 @@ export function RoofPage({ initial }: { initial: CustomerSite }) {
           {words.sentences.join(' ')}
         </p>
         <p className="mt-2 text-sm text-ink-2">
-          As of {clock(roof.now.at, site.timeZone)}
-          {readerZone && clocksDiffer(roof.now.at, site.timeZone, readerZone)
-            ? ` ${zoneName(roof.now.at, site.timeZone)}, the time at the roof`
-            : ''}
-          .
-          {error && dataUpdatedAt > 0 && ' It could not be read again since; the next try follows by itself.'}
+          {roofPage.asOfAtReaderZone(
+            roof.now.at,
+            site.timeZone,
+            readerZone,
+            clocksDiffer(roof.now.at, site.timeZone, readerZone),
+          )}
+          {error && dataUpdatedAt > 0 && roofPage.itCouldNotBe}
         </p>
       </header>
       {words.caution && (
@@ -162,11 +161,11 @@ export function RoofPage({ initial }: { initial: CustomerSite }) {
           )}
         </div>
         <div className="grid gap-4 sm:grid-cols-2">
-          <Sheet id="shutdown" title="Rapid shutdown">
+          <Sheet id="shutdown" title={roofPage.rapidShutdown}>
             <p>{testWords(roof.lastTest, site.ruleSet, site.timeZone)}</p>
             <p className="mt-2 text-ink-2">{switchWords(site)}</p>
           </Sheet>
-          <Sheet id="care" title="Who looks after it">
+          <Sheet id="care" title={roofPage.whoLooksAfterIt}>
             {care.logo && (
               <img
                 src={paths.api.logo(care.logo)}
@@ -185,7 +184,7 @@ export function RoofPage({ initial }: { initial: CustomerSite }) {
                 </a>
               </p>
             )}
-            <p className="mt-2 text-ink-2">In an emergency call the emergency services first.</p>
+            <p className="mt-2 text-ink-2">{roofPage.inAnEmergencyCall}</p>
           </Sheet>
         </div>
         <Papers roof={roof} />

@@ -3,6 +3,7 @@ import { Button, ButtonLink } from '../../components/ui/Button';
 import { Field } from '../../components/ui/Field';
 import type { ApiError } from '../../lib/api';
 import type { MadeShareLink, ShareLinkBody } from '../../schemas/api/share';
+import { shareForm } from '../../words/sharing';
 
 interface Props {
   busy: boolean;
@@ -12,8 +13,8 @@ interface Props {
   onClose: () => void;
 }
 const FORMS = [
-  { kiosk: false, words: 'An ordinary page, for people with a phone or a computer' },
-  { kiosk: true, words: 'A lobby screen: large, nothing to touch, dark at night' },
+  { kiosk: false, words: shareForm.anOrdinaryPageFor },
+  { kiosk: true, words: shareForm.aLobbyScreenLarge },
 ] as const;
 
 /** What is shared and until when; afterwards the link, this once. */
@@ -34,26 +35,26 @@ export function ShareForm({ busy, fault, made, onSubmit, onClose }: Props) {
     return (
       <>
         <Field
-          label={`Link of “${made.link.label}”`}
+          label={shareForm.linkOf(made.link.label)}
           readOnly
           value={made.address}
           onFocus={(event) => event.target.select()}
-          hint="Keep it now: only a fingerprint of it is stored. Whoever has it sees the page until it ends."
+          hint={shareForm.keepItNowOnly}
         />
         <p role="status" className="mt-2 min-h-[20px] text-sm text-ink-2">
-          {copied === 'yes' && 'Copied.'}
-          {copied === 'no' && 'It could not be copied: select it above and copy it by hand.'}
+          {copied === 'yes' && shareForm.copied}
+          {copied === 'no' && shareForm.itCouldNotBe}
         </p>
         <div className="mt-2 flex flex-wrap gap-2">
           {typeof navigator !== 'undefined' && 'clipboard' in navigator && (
             <Button weight="primary" onClick={() => void copy()}>
-              Copy the link
+              {shareForm.copyTheLink}
             </Button>
           )}
           <ButtonLink href={made.address} target="_blank" rel="noopener noreferrer">
-            Open it
+            {shareForm.openIt}
           </ButtonLink>
-          <Button onClick={onClose}>Done</Button>
+          <Button onClick={onClose}>{shareForm.done}</Button>
         </div>
       </>
     );
@@ -80,17 +81,17 @@ export function ShareForm({ busy, fault, made, onSubmit, onClose }: Props) {
         </p>
       )}
       <Field
-        label="Label"
+        label={shareForm.label}
         name="label"
         value={typed.label}
         maxLength={80}
         autoComplete="off"
-        hint="Where or for whom it is, for instance: Lobby."
+        hint={shareForm.whereOrForWhom}
         error={faultOf('label')}
         onChange={(event) => setTyped({ ...typed, label: event.target.value })}
       />
       <fieldset>
-        <legend className="mb-1 font-medium">Form</legend>
+        <legend className="mb-1 font-medium">{shareForm.form}</legend>
         {FORMS.map(({ kiosk, words }) => (
           <label key={words} className="target flex items-center gap-2.5">
             <input
@@ -105,30 +106,30 @@ export function ShareForm({ busy, fault, made, onSubmit, onClose }: Props) {
         ))}
       </fieldset>
       <Field
-        label="Ends on"
+        label={shareForm.endsOn}
         name="endsOn"
         type="date"
         value={typed.endsOn}
-        hint="The last day on which it works, at the site. Empty: until somebody ends it."
+        hint={shareForm.theLastDayOn}
         error={faultOf('endsOn')}
         onChange={(event) => setTyped({ ...typed, endsOn: event.target.value })}
       />
       {typed.kiosk && (
         <Field
-          label="May stand in a page of"
+          label={shareForm.mayStandInA}
           name="framedBy"
           inputMode="url"
           autoComplete="off"
           value={typed.framedBy}
           maxLength={200}
-          hint="For a lobby screen that shows several pages: the address of its page, as https://screens.example. Empty: no page may show it in a frame."
+          hint={shareForm.forALobbyScreen}
           error={faultOf('framedBy')}
           onChange={(event) => setTyped({ ...typed, framedBy: event.target.value })}
         />
       )}
       <div>
         <Button type="submit" weight="primary" disabled={busy}>
-          Make the link
+          {shareForm.makeTheLink}
         </Button>
       </div>
     </form>

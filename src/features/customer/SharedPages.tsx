@@ -12,13 +12,14 @@ import { queryClient } from '../../lib/query-client';
 import type { MadeShareLink, ShareLinkBody, ShareLinkItem, ShareLinks } from '../../schemas/api/share';
 import { paths } from '../../schemas/paths';
 import { ShareForm } from './ShareForm';
+import { sharedPages } from '../../words/sharing';
 
 /** "until 3 December 2026": the last day on which it works, which ends a moment before its instant. */
 const untilWords = (link: ShareLinkItem, timeZone: string): string => {
   const last = (at: string) => longDate(Date.parse(at) - 1000, timeZone);
-  if (link.endedAt) return `ended ${longDate(link.endedAt, timeZone)}`;
-  if (!link.expiresAt) return 'until somebody ends it';
-  return `${link.state === 'expired' ? 'ran out after' : 'until'} ${last(link.expiresAt)}`;
+  if (link.endedAt) return sharedPages.endedEndedAt(link.endedAt, timeZone);
+  if (!link.expiresAt) return sharedPages.untilSomebodyEndsIt;
+  return `${link.state === 'expired' ? sharedPages.ranOutAfter : sharedPages.until} ${last(link.expiresAt)}`;
 };
 
 /** For managers, under the owner's page: who may see it without signing in. */
@@ -66,40 +67,38 @@ export function SharedPages({
     <li key={link.id} className="flex flex-wrap items-center justify-between gap-x-4 gap-y-2 py-2.5">
       <div className="min-w-0">
         <p className="font-medium">
-          {link.label} {link.kiosk && <Tag tone="outline">lobby screen</Tag>}
+          {link.label} {link.kiosk && <Tag tone="outline">{sharedPages.lobbyScreen}</Tag>}
         </p>
         <p className="text-sm text-ink-2">
-          {untilWords(link, timeZone)} · {link.framedBy && `in a frame of ${link.framedBy} · `} made by{' '}
-          {link.madeBy}, {longDate(link.createdAt, timeZone)} ·{' '}
+          {untilWords(link, timeZone)} · {link.framedBy && sharedPages.inFrameOf(link.framedBy)}
+          {sharedPages.madeBy(link.madeBy, link.createdAt, timeZone)}
           {link.lastUsedAt ? (
             <>
-              last used <RelativeTime at={link.lastUsedAt} now={page.at} timeZone={timeZone} />
+              {sharedPages.lastUsed}
+              <RelativeTime at={link.lastUsedAt} now={page.at} timeZone={timeZone} />
             </>
           ) : (
-            'never used'
+            sharedPages.neverUsed
           )}
         </p>
       </div>
       {link.state === 'open' && (
         <Button
-          aria-label={`End it: ${link.label}`}
+          aria-label={sharedPages.endIt2(link.label)}
           onClick={() => {
             end.reset();
             setEnding(link);
           }}
         >
-          End it
+          {sharedPages.endIt}
         </Button>
       )}
     </li>
   );
   return (
     <div className="no-print mt-8">
-      <Sheet id="shared-pages" title="Shared pages" aside="only managers see this sheet">
-        <p>
-          Whoever has the link sees the sentences, today’s curve and the energy of {siteName} without signing
-          in; no address, no telephone, no names, no tests and no papers.
-        </p>
+      <Sheet id="shared-pages" title={sharedPages.sharedPages} aside={sharedPages.onlyManagersSeeThis}>
+        <p>{sharedPages.whoeverHasTheLink(siteName)}</p>
         <div className="mt-3">
           <Button
             weight="primary"
@@ -108,12 +107,12 @@ export function SharedPages({
               setMaking(true);
             }}
           >
-            Share this page
+            {sharedPages.shareThisPage}
           </Button>
         </div>
         {error && (
           <div className="mt-3">
-            <Notice kind="failed" title="The links could not be read anew">
+            <Notice kind="failed" title={sharedPages.theLinksCouldNot}>
               {error.message}
             </Notice>
           </div>
@@ -121,12 +120,12 @@ export function SharedPages({
         {open.length > 0 ? (
           <ul className="mt-3 divide-y divide-rule-faint">{open.map(line)}</ul>
         ) : (
-          <p className="mt-3 text-ink-2">Nobody sees it without signing in at present.</p>
+          <p className="mt-3 text-ink-2">{sharedPages.nobodySeesItWithout}</p>
         )}
         {over.length > 0 && (
           <details className="mt-2">
             <summary className="target inline-flex cursor-pointer items-center text-petrol">
-              Ended and run out ({over.length})
+              {sharedPages.endedAndRunOut(over.length)}
             </summary>
             <ul className="divide-y divide-rule-faint">{over.map(line)}</ul>
           </details>
@@ -134,7 +133,7 @@ export function SharedPages({
       </Sheet>
       <Dialog
         open={making}
-        title={make.data ? 'The link, shown this once' : 'Share this page'}
+        title={make.data ? sharedPages.theLinkShownThis : sharedPages.shareThisPage}
         onClose={() => setMaking(false)}
       >
         <ShareForm
@@ -147,10 +146,10 @@ export function SharedPages({
       </Dialog>
       <Dialog
         open={ending !== null}
-        title={ending ? `End “${ending.label}”?` : ''}
+        title={ending ? sharedPages.endEnding(ending.label) : ''}
         onClose={() => setEnding(null)}
       >
-        <p>Screens and people that use the link see nothing from now on. It can’t be taken up again.</p>
+        <p>{sharedPages.screensAndPeopleThat}</p>
         {end.error && (
           <p role="alert" className="mt-3 font-medium text-rust-ink">
             {end.error.message}
@@ -164,9 +163,9 @@ export function SharedPages({
               if (ending) end.mutate(ending.id);
             }}
           >
-            End it
+            {sharedPages.endIt}
           </Button>
-          <Button onClick={() => setEnding(null)}>Leave it</Button>
+          <Button onClick={() => setEnding(null)}>{sharedPages.leaveIt}</Button>
         </div>
       </Dialog>
     </div>

@@ -1,18 +1,18 @@
 import { Caution } from '../../components/ui/Caution';
 import { Heading } from '../../components/ui/Heading';
 import { clocksDiffer, useReaderZone } from '../../components/ui/reader-zone';
-import { clock, zoneName } from '../../drawings/times';
 import type { SharedSite } from '../../schemas/api/share';
 import { lifeCard, monthCard, yearCard } from './cards';
 import { FigureSheet } from '../../components/ui/FigureSheet';
 import { TodaySheet } from './TodaySheet';
 import { useShared } from './use-shared';
 import { customerWords } from './words';
+import { sharedRoof } from '../../words/shared-page';
 
 /** What is said where a link no longer works. */
 export const LINK_OVER = {
-  title: 'This page is no longer shared',
-  sentence: 'The link was ended or has run out. Ask whoever gave it to you.',
+  title: sharedRoof.thisPageIsNo,
+  sentence: sharedRoof.theLinkWasEnded,
 };
 
 /** A roof for whoever has the link: it says less than the owner's page, and nothing on it can be operated. */
@@ -32,11 +32,13 @@ export function SharedRoof({ token, initial }: { token: string; initial: SharedS
           {words.sentences.join(' ')}
         </p>
         <p className="mt-2 text-sm text-ink-2">
-          As of {clock(now.at, timeZone)}
-          {readerZone && clocksDiffer(now.at, timeZone, readerZone)
-            ? ` ${zoneName(now.at, timeZone)}, the time at the roof`
-            : ''}
-          .{late && ' It could not be read again since; the next try follows by itself.'}
+          {sharedRoof.asOfAtReaderZone(
+            now.at,
+            timeZone,
+            readerZone,
+            clocksDiffer(now.at, timeZone, readerZone),
+          )}
+          {late && sharedRoof.itCouldNotBe}
         </p>
       </header>
       {words.caution && (

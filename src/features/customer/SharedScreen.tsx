@@ -1,7 +1,6 @@
 import { useEffect } from 'react';
 import { Caution } from '../../components/ui/Caution';
 import { DayCurve } from '../../drawings/DayCurve';
-import { clock } from '../../drawings/times';
 import type { SharedSite } from '../../schemas/api/share';
 import { lifeCard, monthCard, yearCard } from './cards';
 import { dayHours } from './day-hours';
@@ -9,6 +8,7 @@ import { LINK_OVER } from './SharedRoof';
 import { dayLabel } from './TodaySheet';
 import { useShared } from './use-shared';
 import { customerWords } from './words';
+import { sharedScreen } from '../../words/shared-page';
 
 /** A screen that runs for months takes a new build of the page twice a day. */
 const RELOAD_AFTER_MS = 12 * 3_600_000;
@@ -41,8 +41,7 @@ export function SharedScreen({ token, initial }: { token: string; initial: Share
       <header className="flex flex-wrap items-baseline justify-between gap-x-8 text-[clamp(16px,1.35vw,30px)] leading-[1.3]">
         <span className="font-semibold tracking-[-0.02em]">{site.name}</span>
         <span className="text-ink-2">
-          Looked after by {site.organisation} ·{' '}
-          {late ? `last read ${clock(now.at, timeZone)}` : clock(now.at, timeZone)}
+          {sharedScreen.lookedAfterByOrganisation(site.organisation, late, now.at, timeZone)}
         </span>
       </header>
       <main
@@ -62,7 +61,7 @@ export function SharedScreen({ token, initial }: { token: string; initial: Share
           </div>
         )}
         <section
-          aria-label="Today"
+          aria-label={sharedScreen.today}
           className="flex flex-1 flex-col justify-center lg:min-h-[28vh] border-b border-t-2 border-b-rule border-t-ink bg-sheet px-[1vw] py-[0.8vw]"
         >
           <div className="hidden sm:block lg:min-h-0 lg:flex-1 lg:[&_svg]:!h-full">
@@ -72,7 +71,7 @@ export function SharedScreen({ token, initial }: { token: string; initial: Share
             <DayCurve {...curve} label={label} width={360} height={210} />
           </div>
           <p className="mt-1 px-1 text-[clamp(13px,1vw,22px)] leading-[1.3] text-ink-2">
-            Today: solid what was made, dotted a clear day of this date.
+            {sharedScreen.todaySolidWhatWas}
           </p>
         </section>
         <dl className="grid gap-[clamp(12px,1.6vw,36px)] sm:grid-cols-3">

@@ -1,10 +1,11 @@
 import { Sheet } from '../../components/ui/Sheet';
 import { DayCurve } from '../../drawings/DayCurve';
-import { energy, percent } from '../../drawings/numbers';
+import { energy } from '../../drawings/numbers';
 import { clock } from '../../drawings/times';
 import type { CustomerSite } from '../../schemas/api/customer';
 import { clearDayWords } from './cards';
 import { dayHours } from './day-hours';
+import { todaySheet } from '../../words/customer';
 
 interface Props {
   today: CustomerSite['today'];
@@ -15,46 +16,49 @@ interface Props {
 /** What the curve shows, for those who do not see it. */
 export const dayLabel = (today: CustomerSite['today']): string =>
   today.energy === null
-    ? 'Nothing is known of today yet; the dotted line is a clear day of this date.'
-    : `Power made today, ${energy(today.energy)} so far, beside a clear day of this date${
-        today.clearEnergySoFar > 0 ? `: ${percent(today.energy / today.clearEnergySoFar)} of it by now` : ''
-      }.`;
+    ? todaySheet.nothingIsKnownOf
+    : todaySheet.powerMadeTodayN(today.energy, today.clearEnergySoFar);
 
 /** The day so far as a curve beside a clear day of its date, and as a table. */
 export function TodaySheet({ today, at, timeZone }: Props) {
   const curve = dayHours(today, at);
   const label = dayLabel(today);
   return (
-    <Sheet id="today" title="Today" aside={`solid: made · ${clearDayWords(today.clearFrom)}`} flush>
+    <Sheet
+      id="today"
+      title={todaySheet.today}
+      aside={todaySheet.solidMade(clearDayWords(today.clearFrom))}
+      flush
+    >
       <div className="hidden sm:block">
         <DayCurve {...curve} label={label} width={860} height={270} />
       </div>
       <div className="sm:hidden">
         <DayCurve {...curve} label={label} width={360} height={210} />
       </div>
-      {today.energy === null && <p className="mt-2 text-ink-2">Nothing is known of today yet.</p>}
+      {today.energy === null && <p className="mt-2 text-ink-2">{todaySheet.nothingIsKnownOfToday}</p>}
       <details className="mt-2 text-sm text-ink-2">
         <summary className="inline-flex min-h-[36px] cursor-pointer items-center underline underline-offset-2">
-          The same as a table
+          {todaySheet.theSameAsA}
         </summary>
         <div
           className="mt-2 max-h-[320px] overflow-auto"
           tabIndex={0}
           role="region"
-          aria-label="Today as a table"
+          aria-label={todaySheet.todayAsATable}
         >
           <table className="w-full max-w-[420px] text-left">
-            <caption className="sr-only">Mean power of each quarter of an hour</caption>
+            <caption className="sr-only">{todaySheet.meanPowerOfEach}</caption>
             <thead>
               <tr className="border-b border-rule">
                 <th scope="col" className="py-1 font-medium">
-                  From
+                  {todaySheet.from}
                 </th>
                 <th scope="col" className="py-1 text-right font-medium">
-                  Made (kW)
+                  {todaySheet.madeKW}
                 </th>
                 <th scope="col" className="py-1 text-right font-medium">
-                  Clear day (kW)
+                  {todaySheet.clearDayKW}
                 </th>
               </tr>
             </thead>

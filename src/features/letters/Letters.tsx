@@ -2,8 +2,8 @@ import { Notice } from '../../components/ui/Notice';
 import { Sheet } from '../../components/ui/Sheet';
 import { Tag } from '../../components/ui/Tag';
 import { SiteTime } from '../../components/ui/Time';
-import { counted } from '../../drawings/numbers';
 import type { LetterItem, LettersPage } from '../../schemas/api/letters';
+import { lettersWords } from '../../words/letters';
 
 export function lettersFinding({ letters, sending, localPost }: LettersPage): {
   finding: string;
@@ -11,33 +11,30 @@ export function lettersFinding({ letters, sending, localPost }: LettersPage): {
 } {
   const waiting = letters.filter((l) => !l.sentAt && !l.givenUpAt).length;
   const lost = letters.filter((l) => l.givenUpAt).length;
-  const where = localPost
-    ? 'This demo’s letters go to a post on this machine and no further.'
-    : 'A letter is marked as sent only after the mail server took it.';
+  const where = localPost ? lettersWords.thisDemosLettersGo : lettersWords.aLetterIsMarked;
   if (!sending && waiting > 0)
     return {
-      finding: `${counted(waiting, 'letter waits', 'letters wait')}: no mail server is set`,
-      sentence: 'Set SMTP_URL; what waits goes out by itself.',
+      finding: lettersWords.noMailServerIs(waiting),
+      sentence: lettersWords.setSMTPURLWhat,
     };
   if (lost > 0)
     return {
-      finding: `${counted(lost, 'letter was', 'letters were')} given up`,
-      sentence: 'The mail server refused it for good, or twelve tries failed: see why below.',
+      finding: lettersWords.givenUp(lost),
+      sentence: lettersWords.theMailServerRefused,
     };
-  if (waiting > 0)
-    return { finding: `${counted(waiting, 'letter waits', 'letters wait')} to be sent`, sentence: where };
+  if (waiting > 0) return { finding: lettersWords.toBeSent(waiting), sentence: where };
   return {
-    finding: letters.length === 0 ? 'No letter has been written' : 'Every letter has been sent',
+    finding: letters.length === 0 ? lettersWords.noLetterHasBeen : lettersWords.everyLetterHasBeen,
     sentence: where,
   };
 }
 
 function State({ letter }: { letter: LetterItem }) {
-  if (letter.sentAt) return <Tag tone="petrol">sent</Tag>;
-  if (letter.givenUpAt) return <Tag tone="rust">given up</Tag>;
+  if (letter.sentAt) return <Tag tone="petrol">{lettersWords.sent}</Tag>;
+  if (letter.givenUpAt) return <Tag tone="rust">{lettersWords.givenUp2}</Tag>;
   return (
     <Tag tone="outline">
-      {letter.attempts > 0 ? `waits, ${counted(letter.attempts, 'try', 'tries')}` : 'waits'}
+      {letter.attempts > 0 ? lettersWords.waitsAttempts(letter.attempts) : lettersWords.waits}
     </Tag>
   );
 }
@@ -46,12 +43,12 @@ function State({ letter }: { letter: LetterItem }) {
 export function Letters({ page, timeZone }: { page: LettersPage; timeZone: string }) {
   if (page.letters.length === 0)
     return (
-      <Notice kind="empty" title="Nothing has been written yet">
-        A handover writes to the customers of its site.
+      <Notice kind="empty" title={lettersWords.nothingHasBeenWritten}>
+        {lettersWords.aHandoverWritesTo}
       </Notice>
     );
   return (
-    <Sheet id="letters" title="Letters" aside="newest first, at most 200">
+    <Sheet id="letters" title={lettersWords.letters} aside={lettersWords.newestFirstAtMost}>
       <ul className="divide-y divide-rule-faint">
         {page.letters.map((letter) => (
           <li key={letter.ref} className="py-3">
@@ -59,7 +56,7 @@ export function Letters({ page, timeZone }: { page: LettersPage; timeZone: strin
               <div className="min-w-0">
                 <p className="font-semibold">{letter.subject}</p>
                 <p className="break-all text-sm text-ink-2">
-                  to {letter.to}, written{' '}
+                  {lettersWords.toWritten(letter.to)}
                   <SiteTime at={letter.createdAt} now={page.at} timeZone={timeZone} zone />
                 </p>
               </div>
@@ -70,17 +67,17 @@ export function Letters({ page, timeZone }: { page: LettersPage; timeZone: strin
                 {letter.lastError}
                 {!letter.givenUpAt && (
                   <>
-                    {' '}
-                    Next try <SiteTime at={letter.notBefore} now={page.at} timeZone={timeZone} />.
+                    {lettersWords.nextTry}
+                    <SiteTime at={letter.notBefore} now={page.at} timeZone={timeZone} />.
                   </>
                 )}
               </p>
             )}
             {letter.received && (
               <details className="mt-1">
-                <summary className="target cursor-pointer text-petrol">Read it as it was received</summary>
+                <summary className="target cursor-pointer text-petrol">{lettersWords.readItAsIt}</summary>
                 <iframe
-                  title={`Letter: ${letter.subject}`}
+                  title={lettersWords.letterSubject(letter.subject)}
                   sandbox=""
                   srcDoc={letter.received.html}
                   className="mt-2 h-[420px] w-full border border-rule bg-[#fff]"

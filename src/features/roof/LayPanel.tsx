@@ -6,6 +6,7 @@ import { Sheet } from '../../components/ui/Sheet';
 import { compass } from '../../domain/commissioning/roof/lay';
 import type { RoofString } from '../../schemas/api/roof';
 import { LABELS, RANGES, type LayingForm, type NumberKey, type ReadForm } from './laying-form';
+import { layPanel } from '../../words/roof';
 
 interface Props {
   strings: readonly RoofString[];
@@ -48,21 +49,21 @@ export function LayPanel({ strings, string, placed, form, read, tried, onString,
   return (
     <Sheet
       id="lay"
-      title="Lay a string"
-      aside={`${string.slots.length} modules, ${string.plane}, ${string.surfaceTilt}°`}
+      title={layPanel.layAString}
+      aside={layPanel.slotsModulesPlaneSurfaceTilt(string.slots.length, string.plane, string.surfaceTilt)}
     >
       <div className="grid grid-cols-2 gap-3">
         <Choice
           className="col-span-2"
-          label="String"
+          label={layPanel.string}
           value={string.id}
           options={strings.map((s) => ({
             value: s.id,
-            label: `${s.name}: ${placed.has(s.id) ? 'on the roof' : 'not on the roof yet'}`,
+            label: `${s.name}: ${placed.has(s.id) ? layPanel.onTheRoof : layPanel.notOnTheRoof}`,
           }))}
           onChange={onString}
         />
-        {field('startX', 'or tap the roof')}
+        {field('startX', layPanel.orTapTheRoof)}
         {field('startY')}
         <Choice
           label={LABELS.direction}
@@ -70,26 +71,26 @@ export function LayPanel({ strings, string, placed, form, read, tried, onString,
           options={[
             ...directions.map((d, i) => ({
               value: String(d),
-              label: i < 2 ? `${compass(d)} (eaves)` : compass(d),
+              label: i < 2 ? layPanel.dEaves(compass(d)) : compass(d),
             })),
-            { value: 'other', label: 'in degrees' },
+            { value: 'other', label: layPanel.inDegrees },
           ]}
           onChange={(v) => set({ direction: v === 'other' ? String(Number(form.direction) + 5) : v })}
         />
         {directions.includes(towards) ? (
           <Choice
-            label="Next row lies to the"
+            label={layPanel.nextRowLiesTo}
             value={form.nextRow}
             options={(['right', 'left'] as const).map((side) => ({ value: side, label: hand(side) }))}
             onChange={(v) => set({ nextRow: v === 'left' ? 'left' : 'right' })}
           />
         ) : (
-          field('direction', 'from north, clockwise')
+          field('direction', layPanel.fromNorthClockwise)
         )}
         {!directions.includes(towards) && (
           <Choice
             className="col-span-2"
-            label="Next row lies to the"
+            label={layPanel.nextRowLiesTo}
             value={form.nextRow}
             options={(['right', 'left'] as const).map((side) => ({ value: side, label: hand(side) }))}
             onChange={(v) => set({ nextRow: v === 'left' ? 'left' : 'right' })}
@@ -97,14 +98,14 @@ export function LayPanel({ strings, string, placed, form, read, tried, onString,
         )}
         {field('perRow')}
         <div>
-          <p className="mb-1 font-medium">Modules stand</p>
+          <p className="mb-1 font-medium">{layPanel.modulesStand}</p>
           <Segmented
-            label="Modules stand"
+            label={layPanel.modulesStand}
             look="bold"
             value={form.orientation}
             options={[
-              { value: 'portrait', label: 'upright' },
-              { value: 'landscape', label: 'across' },
+              { value: 'portrait', label: layPanel.upright },
+              { value: 'landscape', label: layPanel.across },
             ]}
             onChange={(orientation) => set({ orientation })}
           />
@@ -118,21 +119,21 @@ export function LayPanel({ strings, string, placed, form, read, tried, onString,
             checked={form.serpentine}
             onChange={(event) => set({ serpentine: event.target.checked })}
           />
-          Serpentine: every other row runs back
+          {layPanel.serpentineEveryOtherRow}
         </label>
         <Field
           className="col-span-2"
-          label="Counted from"
+          label={layPanel.countedFrom}
           value={form.from}
-          placeholder={`${compass(towards + 180)} end`}
+          placeholder={layPanel.compassEnd(compass(towards + 180))}
           maxLength={60}
           onChange={(event) => set({ from: event.target.value })}
-          hint={laid[0] ? `Position 1 is then: ${laid[0].slots[0]?.roofPlace ?? ''}.` : undefined}
+          hint={laid[0] ? layPanel.positionIsThen(laid[0].slots[0]?.roofPlace) : undefined}
         />
-        {field('strings', 'each begins on the row after the last')}
+        {field('strings', layPanel.eachBeginsOnThe)}
         <div className="self-start pt-6">
           <Button weight="primary" className="w-full" onClick={onLay}>
-            Lay {laid.length > 1 ? `${laid.length} strings` : string.name}
+            {layPanel.layLaid1Laid(laid.length, string.name)}
           </Button>
         </div>
       </div>

@@ -6,6 +6,7 @@ import { outlineArea, outlineFault, type Outline } from '../../domain/commission
 import { number } from '../../drawings/numbers';
 import { typedNumber } from '../../schemas/typed-number';
 import { rectangle } from './draft';
+import { outlinePanel } from '../../words/roof';
 
 interface Props {
   outline: Outline;
@@ -19,11 +20,11 @@ export function OutlinePanel({ outline, onOutline }: Props) {
   return (
     <Sheet
       id="outline"
-      title="Outline"
+      title={outlinePanel.outline}
       aside={
         outline.length > 2 && !fault
-          ? `${number(outlineArea(outline))} m² in plan`
-          : `${outline.length} points`
+          ? outlinePanel.inPlan(outlineArea(outline))
+          : outlinePanel.outlinePoints(outline.length)
       }
     >
       {fault && (
@@ -31,29 +32,24 @@ export function OutlinePanel({ outline, onOutline }: Props) {
           {fault}
         </p>
       )}
-      {outline.length === 0 && (
-        <p className="mb-3 text-ink-2">
-          Tap the corners of the roof on the drawing, or begin with a rectangle. North is up; 0, 0 is a corner
-          that you choose.
-        </p>
-      )}
+      {outline.length === 0 && <p className="mb-3 text-ink-2">{outlinePanel.tapTheCornersOf}</p>}
       <RectangleForm onMake={onOutline} replaces={outline.length > 0} />
       {outline.length > 0 && (
         <table className="mt-4 w-full border-collapse text-left">
-          <caption className="sr-only">Points of the outline in metres</caption>
+          <caption className="sr-only">{outlinePanel.pointsOfTheOutline}</caption>
           <thead>
             <tr className="border-b border-rule text-sm text-ink-2">
               <th scope="col" className="w-10 py-1 font-medium">
-                No.
+                {outlinePanel.no}
               </th>
               <th scope="col" className="py-1 font-medium">
-                East (m)
+                {outlinePanel.eastM}
               </th>
               <th scope="col" className="py-1 font-medium">
-                North (m)
+                {outlinePanel.northM}
               </th>
               <th scope="col" className="w-12">
-                <span className="sr-only">Remove</span>
+                <span className="sr-only">{outlinePanel.remove}</span>
               </th>
             </tr>
           </thead>
@@ -66,7 +62,7 @@ export function OutlinePanel({ outline, onOutline }: Props) {
                 {([0, 1] as const).map((axis) => (
                   <td key={axis} className="py-0.5 pr-2">
                     <MetresInput
-                      label={`Point ${i + 1}, ${axis === 0 ? 'east' : 'north'}`}
+                      label={outlinePanel.pointII(i, axis)}
                       value={point[axis]}
                       onValue={(v) =>
                         onOutline(
@@ -82,7 +78,7 @@ export function OutlinePanel({ outline, onOutline }: Props) {
                   <button
                     type="button"
                     className="target text-ink-2 hover:text-ink"
-                    aria-label={`Remove point ${i + 1}`}
+                    aria-label={outlinePanel.removePoint(i)}
                     onClick={() => onOutline(outline.filter((_, n) => n !== i))}
                   >
                     ×
@@ -143,9 +139,9 @@ function RectangleForm({ onMake, replaces }: { onMake: (outline: Outline) => voi
   const [text, setText] = useState({ width: '', depth: '', turned: '0' });
   const [faults, setFaults] = useState<Record<string, string | null>>({});
   const make = () => {
-    const width = typedNumber(text.width, 'Width', { min: 1, max: 1000, unit: 'm' });
-    const depth = typedNumber(text.depth, 'Depth', { min: 1, max: 1000, unit: 'm' });
-    const turned = typedNumber(text.turned, 'Turned', { min: -360, max: 360, unit: '°' });
+    const width = typedNumber(text.width, outlinePanel.width, { min: 1, max: 1000, unit: 'm' });
+    const depth = typedNumber(text.depth, outlinePanel.depth, { min: 1, max: 1000, unit: 'm' });
+    const turned = typedNumber(text.turned, outlinePanel.turned, { min: -360, max: 360, unit: '°' });
     setFaults({ width: width.fault, depth: depth.fault, turned: turned.fault });
     if (width.value !== null && depth.value !== null && turned.value !== null)
       onMake(rectangle(width.value, depth.value, turned.value));
@@ -164,15 +160,15 @@ function RectangleForm({ onMake, replaces }: { onMake: (outline: Outline) => voi
   return (
     <details open={!replaces}>
       <summary className="target flex cursor-pointer items-center text-[15px] text-petrol">
-        {replaces ? 'Begin anew with a rectangle' : 'A rectangle'}
+        {replaces ? outlinePanel.beginAnewWithA : outlinePanel.aRectangle}
       </summary>
       <div className="grid grid-cols-2 gap-3 pt-1">
-        {field('width', 'Width', 'm')}
-        {field('depth', 'Depth', 'm')}
-        {field('turned', 'Turned', '°', 'clockwise from east')}
+        {field('width', outlinePanel.width, 'm')}
+        {field('depth', outlinePanel.depth, 'm')}
+        {field('turned', outlinePanel.turned, '°', outlinePanel.clockwiseFromEast)}
         <div className="self-end pb-6">
           <Button className="w-full" onClick={make}>
-            Draw it
+            {outlinePanel.drawIt}
           </Button>
         </div>
       </div>

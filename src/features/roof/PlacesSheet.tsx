@@ -1,6 +1,7 @@
 import { Sheet } from '../../components/ui/Sheet';
 import type { RoofSlot, RoofString } from '../../schemas/api/roof';
 import { MetresInput } from './OutlinePanel';
+import { placesSheet } from '../../words/roof';
 
 interface Props {
   string: RoofString;
@@ -17,12 +18,12 @@ export function PlacesSheet({ string, slots, mayWrite, onSlots }: Props) {
     onSlots(slots.map((s) => (s.position === position ? { ...s, ...some } : s)));
   const figure = (value: number | null) => (value === null ? '–' : value.toFixed(2));
   return (
-    <Sheet id="places" title={`Places of ${string.name}`} aside="as a person finds them" flush>
+    <Sheet id="places" title={placesSheet.placesOf(string.name)} aside={placesSheet.asAPersonFinds} flush>
       <div aria-hidden="true" className={`${ROW} border-b border-rule pb-1 text-sm font-medium text-ink-2`}>
-        <span>Position</span>
-        <span>East (m)</span>
-        <span>North (m)</span>
-        <span className="hidden sm:block">In words</span>
+        <span>{placesSheet.position}</span>
+        <span>{placesSheet.eastM}</span>
+        <span>{placesSheet.northM}</span>
+        <span className="hidden sm:block">{placesSheet.inWords}</span>
       </div>
       <ol>
         {slots.map((slot) => (
@@ -32,20 +33,20 @@ export function PlacesSheet({ string, slots, mayWrite, onSlots }: Props) {
               <>
                 <div>
                   <MetresInput
-                    label={`Position ${slot.position}, east`}
+                    label={placesSheet.positionEast(slot.position)}
                     value={slot.roofX}
                     onValue={(roofX) => set(slot.position, { roofX })}
                   />
                 </div>
                 <div>
                   <MetresInput
-                    label={`Position ${slot.position}, north`}
+                    label={placesSheet.positionNorth(slot.position)}
                     value={slot.roofY}
                     onValue={(roofY) => set(slot.position, { roofY })}
                   />
                 </div>
                 <input
-                  aria-label={`Position ${slot.position} in words`}
+                  aria-label={placesSheet.positionInWords(slot.position)}
                   value={slot.roofPlace}
                   maxLength={200}
                   onChange={(event) => set(slot.position, { roofPlace: event.target.value })}

@@ -16,6 +16,7 @@ import { PlacesSheet } from './PlacesSheet';
 import { RoofCanvas, type DrawnPath } from './RoofCanvas';
 import { useRoof } from './use-roof';
 import { roofFinding } from './words';
+import { roofBoard } from '../../words/roof';
 
 type Mode = 'outline' | 'strings';
 
@@ -108,8 +109,8 @@ export function RoofBoard({ initial, mayWrite }: { initial: RoofPlan; mayWrite: 
   const needsReason = plan.site.stage === 'operating';
   const count = work.changed.strings.length;
   const what = [
-    work.changed.outline ? 'the outline' : '',
-    count > 0 ? `${count} ${count === 1 ? 'string' : 'strings'}` : '',
+    work.changed.outline ? roofBoard.theOutline : '',
+    count > 0 ? `${count} ${count === 1 ? roofBoard.string : roofBoard.strings}` : '',
   ]
     .filter(Boolean)
     .join(' and ');
@@ -118,16 +119,16 @@ export function RoofBoard({ initial, mayWrite }: { initial: RoofPlan; mayWrite: 
     <>
       <Heading
         crumbs={[
-          { label: 'Commissioning', href: paths.commissioning() },
+          { label: roofBoard.commissioning, href: paths.commissioning() },
           { label: plan.site.name, href: paths.commissioningSite(plan.site.id) },
-          { label: 'As-built', href: paths.asBuilt(plan.site.id) },
-          { label: 'Roof' },
+          { label: roofBoard.asBuilt, href: paths.asBuilt(plan.site.id) },
+          { label: roofBoard.roof },
         ]}
         finding={said.heading}
         sentence={said.sentence}
         actions={
           mayWrite ? undefined : (
-            <ButtonLink href={paths.asBuilt(plan.site.id)}>Look at the as-built</ButtonLink>
+            <ButtonLink href={paths.asBuilt(plan.site.id)}>{roofBoard.lookAtTheAs}</ButtonLink>
           )
         }
       />
@@ -139,8 +140,8 @@ export function RoofBoard({ initial, mayWrite }: { initial: RoofPlan; mayWrite: 
             action={
               work.error.status === 409 ? (
                 <span className="flex flex-wrap gap-2">
-                  <Button onClick={() => work.reload(true)}>Keep mine and look</Button>
-                  <Button onClick={() => work.reload(false)}>Take theirs</Button>
+                  <Button onClick={() => work.reload(true)}>{roofBoard.keepMineAndLook}</Button>
+                  <Button onClick={() => work.reload(false)}>{roofBoard.takeTheirs}</Button>
                 </span>
               ) : undefined
             }
@@ -153,8 +154,8 @@ export function RoofBoard({ initial, mayWrite }: { initial: RoofPlan; mayWrite: 
         <div className="mb-4">
           <Notice
             kind="done"
-            title="The roof is kept"
-            action={<ButtonLink href={paths.serials(plan.site.id)}>Read serials on site</ButtonLink>}
+            title={roofBoard.theRoofIsKept}
+            action={<ButtonLink href={paths.serials(plan.site.id)}>{roofBoard.readSerialsOnSite}</ButtonLink>}
           />
         </div>
       )}
@@ -166,27 +167,27 @@ export function RoofBoard({ initial, mayWrite }: { initial: RoofPlan; mayWrite: 
             title={
               mayWrite ? (
                 <Segmented
-                  label="What is drawn"
+                  label={roofBoard.whatIsDrawn}
                   look="bold"
                   value={mode}
                   options={[
-                    { value: 'outline', label: 'Outline' },
-                    { value: 'strings', label: 'Strings' },
+                    { value: 'outline', label: roofBoard.outline },
+                    { value: 'strings', label: roofBoard.strings2 },
                   ]}
                   onChange={setMode}
                 />
               ) : (
-                'From above'
+                roofBoard.fromAbove
               )
             }
             aside={
               mayWrite ? (
                 <span className="flex gap-2">
                   <Button disabled={!work.canUndo} onClick={work.undo}>
-                    Undo
+                    {roofBoard.undo}
                   </Button>
                   <Button disabled={!work.canRedo} onClick={work.redo}>
-                    Redo
+                    {roofBoard.redo}
                   </Button>
                 </span>
               ) : undefined
@@ -219,7 +220,7 @@ export function RoofBoard({ initial, mayWrite }: { initial: RoofPlan; mayWrite: 
           {mayWrite && work.dirty && (
             <div className="sticky bottom-0 z-10 grid items-end gap-3 border border-rule border-t-ink bg-sheet p-3 sm:grid-cols-[1fr_auto]">
               <Field
-                label={needsReason ? 'Why' : 'Why (if it is worth telling)'}
+                label={needsReason ? roofBoard.why : roofBoard.whyIfItIs}
                 value={reason}
                 maxLength={500}
                 error={work.error?.fault('reason')}
@@ -230,7 +231,7 @@ export function RoofBoard({ initial, mayWrite }: { initial: RoofPlan; mayWrite: 
                 disabled={work.busy || fault !== null}
                 onClick={() => work.save(reason.trim())}
               >
-                Save {what}
+                {roofBoard.saveWhat(what)}
               </Button>
             </div>
           )}
@@ -258,9 +259,9 @@ export function RoofBoard({ initial, mayWrite }: { initial: RoofPlan; mayWrite: 
           {!string && (
             <Notice
               kind="empty"
-              title="There are no strings yet"
+              title={roofBoard.thereAreNoStrings}
               action={
-                <ButtonLink href={paths.asBuiltImport(plan.site.id)}>Bring them in from a file</ButtonLink>
+                <ButtonLink href={paths.asBuiltImport(plan.site.id)}>{roofBoard.bringThemInFrom}</ButtonLink>
               }
             />
           )}

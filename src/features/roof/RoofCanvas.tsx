@@ -4,6 +4,7 @@ import { across, sheetOf, spanOf, type Sheet } from '../../drawings/walk-geometr
 import type { RoofPoint } from '../../domain/commissioning/roof/lay';
 import type { Outline } from '../../domain/commissioning/roof/outline';
 import { toDecimetre } from './draft';
+import { roofCanvas } from '../../words/roof';
 
 export interface DrawnPath {
   id: string;
@@ -103,7 +104,10 @@ export function RoofCanvas({ outline, paths, start, mode, onPoint, onMove, onRem
       viewBox={`0 0 ${WIDTH} ${(sheet.height + foot).toFixed(0)}`}
       width="100%"
       role="group"
-      aria-label={`Roof from above with ${outline.length} points of its outline and ${paths.filter((p) => p.spots.length > 0).length} strings`}
+      aria-label={roofCanvas.roofFromAboveWith(
+        outline.length,
+        paths.filter((p) => p.spots.length > 0).length,
+      )}
       className={`block select-none bg-film ${mode === 'look' ? '' : 'cursor-crosshair'}`}
       style={{ height: 'auto', touchAction: 'manipulation' }}
       onClick={(event) => {
@@ -158,7 +162,7 @@ export function RoofCanvas({ outline, paths, start, mode, onPoint, onMove, onRem
                 fill="transparent"
                 tabIndex={0}
                 role="button"
-                aria-label={`Point ${index + 1} at ${x} m east, ${y} m north. Arrow keys move it, with Shift by metres; Delete removes it.`}
+                aria-label={roofCanvas.pointAtEastNorth(index, x, y)}
                 className="cursor-grab outline-offset-0"
                 style={{ touchAction: 'none' }}
                 onKeyDown={byKey(index)}

@@ -1,5 +1,6 @@
 import { within, type Outline } from '../../domain/commissioning/roof/outline';
 import type { RoofPlan, RoofSave, RoofSlot, RoofString } from '../../schemas/api/roof';
+import { roofDraft } from '../../words/roof';
 
 /** A roof as it is being drawn: what the server has, and what has changed since. */
 export interface Draft {
@@ -81,10 +82,7 @@ export function remarks(plan: RoofPlan, draft: Draft): string[] {
   const drawn = plan.strings.map((s) => ({ string: s, spots: spotsOf(slotsOf(draft, s)) }));
   for (const { string, spots } of drawn) {
     const outside = spots.filter((p) => !within(draft.outline, p)).length;
-    if (outside > 0)
-      list.push(
-        `${outside} ${outside === 1 ? 'module' : 'modules'} of ${string.name} ${outside === 1 ? 'lies' : 'lie'} outside the outline.`,
-      );
+    if (outside > 0) list.push(roofDraft.ofOutsideTheOutline(outside, string.name));
   }
   drawn.forEach(({ string, spots }, i) => {
     for (const other of drawn.slice(i + 1)) {
@@ -92,7 +90,7 @@ export function remarks(plan: RoofPlan, draft: Draft): string[] {
       if (
         spots.some((a) => other.spots.some((b) => Math.abs(a.x - b.x) < close && Math.abs(a.y - b.y) < close))
       )
-        list.push(`${string.name} and ${other.string.name} lie upon each other.`);
+        list.push(roofDraft.andLieUponEach(string.name, other.string.name));
     }
   });
   return list;

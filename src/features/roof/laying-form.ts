@@ -8,6 +8,7 @@ import {
 } from '../../domain/commissioning/roof/lay';
 import { typedNumber, type NumberRange } from '../../schemas/typed-number';
 import type { RoofSlot, RoofString } from '../../schemas/api/roof';
+import { layingForm } from '../../words/roof';
 
 /** How a string is to be laid, as it is typed. */
 export interface LayingForm {
@@ -38,13 +39,13 @@ export const RANGES = {
 } as const satisfies Partial<Record<keyof LayingForm, NumberRange>>;
 export type NumberKey = keyof typeof RANGES;
 export const LABELS: Record<NumberKey, string> = {
-  startX: 'First module, east',
-  startY: 'First module, north',
-  direction: 'Row runs towards',
-  perRow: 'Modules in a row',
-  gapAlong: 'Between modules',
-  gapAcross: 'Between rows',
-  strings: 'Strings alike',
+  startX: layingForm.firstModuleEast,
+  startY: layingForm.firstModuleNorth,
+  direction: layingForm.rowRunsTowards,
+  perRow: layingForm.modulesInARow,
+  gapAlong: layingForm.betweenModules,
+  gapAcross: layingForm.betweenRows,
+  strings: layingForm.stringsAlike,
 };
 
 /** Along the eaves to begin with, rows going down the slope. */

@@ -14,6 +14,7 @@ import {
   type Draft,
   type Drawing,
 } from './draft';
+import { roofUseRoof } from '../../words/roof';
 
 /** A roof that is being drawn, and its keeping. */
 export function useRoof(initial: RoofPlan) {
@@ -42,7 +43,7 @@ export function useRoof(initial: RoofPlan) {
     setError(
       fault instanceof ApiError
         ? fault
-        : new ApiError(0, 'Not saved', fault instanceof Error ? fault.message : String(fault)),
+        : new ApiError(0, roofUseRoof.notSaved, fault instanceof Error ? fault.message : String(fault)),
     );
   const save = async (reason: string) => {
     setBusy(true);
