@@ -10,6 +10,7 @@ import {
 import type { CaseItem } from '../../schemas/api/cases';
 import { paths } from '../../schemas/paths';
 import { dueWords, OUTCOME_TONE, STATE_MEANS } from './words';
+import { caseBoardBoard } from '../../words/case-board';
 
 interface Props {
   cases: readonly CaseItem[];
@@ -86,7 +87,7 @@ export function Board({ cases, onMove }: Props) {
                   onDragStart={(event) => {
                     dragged.current = item;
                     event.dataTransfer.effectAllowed = 'move';
-                    event.dataTransfer.setData('text/plain', `Case ${item.number}`);
+                    event.dataTransfer.setData('text/plain', caseBoardBoard.caseItem(item.number));
                   }}
                   onDragEnd={() => {
                     dragged.current = null;
@@ -100,7 +101,9 @@ export function Board({ cases, onMove }: Props) {
               ))}
             </ul>
             {cards.length === 0 && (
-              <p className="border border-dashed border-rule px-3 py-3 text-sm text-ink-2">Nothing here.</p>
+              <p className="border border-dashed border-rule px-3 py-3 text-sm text-ink-2">
+                {caseBoardBoard.nothingHere}
+              </p>
             )}
           </section>
         );
@@ -135,9 +138,11 @@ function Card({ item, onMove }: { item: CaseItem; onMove: Props['onMove'] }) {
         {item.outcome && <Tag tone={OUTCOME_TONE[item.outcome]}>{CHECK_OUTCOME_WORDS[item.outcome]}</Tag>}
       </p>
       <div className="mt-2 flex items-center justify-between gap-2">
-        <span className="min-w-0 truncate text-sm text-ink-2">{item.assignee?.name ?? 'nobody yet'}</span>
+        <span className="min-w-0 truncate text-sm text-ink-2">
+          {item.assignee?.name ?? caseBoardBoard.nobodyYet}
+        </span>
         <select
-          aria-label={`Move case ${item.number} to`}
+          aria-label={caseBoardBoard.moveCaseTo(item.number)}
           value={item.state}
           onChange={(event) => {
             const to = CASE_STATES.find((s) => s === event.target.value);

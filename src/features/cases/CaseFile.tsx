@@ -17,19 +17,20 @@ import { useCase, type CaseInHand } from './query';
 import { useKeys } from './use-keys';
 import { WhatSheet } from './WhatSheet';
 import { dueWords } from './words';
+import { caseFile } from '../../words/cases';
 
 /** What follows from how a case stands, in a sentence. */
 function sentenceOf({ case: c }: CasePage): string {
-  const who = c.assignee ? `${c.assignee.name} has it` : 'Nobody has it yet';
+  const who = c.assignee ? caseFile.hasIt(c.assignee.name) : caseFile.nobodyHasItYet;
   if (!isClosed(c.state)) {
     const due = dueWords(c);
-    const again = c.outcome === 'not_held' ? ' It was closed and did not hold: see the history.' : '';
+    const again = c.outcome === 'not_held' ? caseFile.itWasClosedAnd : '';
     return `${CASE_STATE_WORDS[c.state]}. ${who}${due ? `, ${due}` : ''}.${again}`;
   }
   return `${CASE_STATE_WORDS[c.state]}. ${
     c.outcome === null
-      ? 'Wakeline looks again over the following daylight and opens it again if it did not hold.'
-      : `Wakeline looked again: ${CHECK_OUTCOME_WORDS[c.outcome]}.`
+      ? caseFile.wakelineLooksAgainOver
+      : caseFile.wakelineLookedAgain(CHECK_OUTCOME_WORDS[c.outcome])
   }`;
 }
 
@@ -47,9 +48,9 @@ export function CaseFile({ initial }: { initial: CasePage }) {
     <>
       <Heading
         crumbs={[
-          { label: 'Cases', href: paths.cases() },
+          { label: caseFile.cases, href: paths.cases() },
           { label: c.siteName, href: paths.site(c.siteId) },
-          { label: `Case ${c.number}` },
+          { label: caseFile.caseN(c.number) },
         ]}
         finding={c.title}
         sentence={sentenceOf(page)}
@@ -60,13 +61,8 @@ export function CaseFile({ initial }: { initial: CasePage }) {
           />
         }
       />
-      <NotRead
-        error={error}
-        title="The case could not be read anew"
-        onRetry={() => refetch()}
-        className="mb-4"
-      >
-        What is shown may be old; what you typed is kept.
+      <NotRead error={error} title={caseFile.theCaseCouldNot} onRetry={() => refetch()} className="mb-4">
+        {caseFile.whatIsShownMay}
       </NotRead>
       {meanwhile && <MeanwhileNotice hand={hand} />}
       {send.error && !meanwhile && (
@@ -100,16 +96,14 @@ export function CaseFile({ initial }: { initial: CasePage }) {
             <PhotosSheet hand={hand} />
           </div>
           <div className="order-7 min-w-0">
-            <Sheet id="pack" title="For whoever is called next">
-              <p className="mb-3 text-ink-2">
-                What is wrong, the as-built, readings, events, drawings, the checklist as done and photos.
-              </p>
+            <Sheet id="pack" title={caseFile.forWhoeverIsCalled}>
+              <p className="mb-3 text-ink-2">{caseFile.whatIsWrongThe}</p>
               <div className="flex flex-wrap gap-2">
                 <ButtonLink href={paths.api.casePack(c.id, 'pdf')} download>
-                  Evidence as PDF
+                  {caseFile.evidenceAsPDF}
                 </ButtonLink>
                 <ButtonLink href={paths.api.casePack(c.id, 'zip')} download>
-                  All as ZIP
+                  {caseFile.allAsZIP}
                 </ButtonLink>
               </div>
             </Sheet>
@@ -139,9 +133,9 @@ function MeanwhileNotice({ hand }: { hand: CaseInHand }) {
       )}
       <div className="mt-3 flex flex-wrap gap-2">
         <Button weight="primary" disabled={send.isPending} onClick={meanwhile.again}>
-          Send mine over it
+          {caseFile.sendMineOverIt}
         </Button>
-        <Button onClick={forget}>Leave it as it is now</Button>
+        <Button onClick={forget}>{caseFile.leaveItAsIt}</Button>
       </div>
     </div>
   );

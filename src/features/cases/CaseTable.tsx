@@ -6,6 +6,7 @@ import { CASE_KIND_WORDS, CASE_STATE_WORDS, CHECK_OUTCOME_WORDS } from '../../do
 import { CASE_SORTS, type CaseItem, type CasesView } from '../../schemas/api/cases';
 import { paths } from '../../schemas/paths';
 import { dueWords, OUTCOME_TONE, STATE_SHAPE, STATE_TONE } from './words';
+import { caseTable } from '../../words/case-board';
 
 interface Props {
   cases: readonly CaseItem[];
@@ -19,14 +20,14 @@ export function CaseTable({ cases, at, view, timeZone, onChange }: Props) {
   const columns: Column<CaseItem>[] = [
     {
       key: 'number',
-      label: 'No.',
+      label: caseTable.no,
       sortable: true,
       from: 'sm',
       cell: (c) => <span className="text-ink-2">{c.number}</span>,
     },
     {
       key: 'title',
-      label: 'Case',
+      label: caseTable.case,
       sortable: true,
       cell: (c) => (
         <>
@@ -40,15 +41,15 @@ export function CaseTable({ cases, at, view, timeZone, onChange }: Props) {
           <span className="block text-sm text-ink-2">
             {c.kind === 'other' ? '' : `${CASE_KIND_WORDS[c.kind]} · `}
             <span className="md:hidden">{c.siteName} · </span>
-            {c.strings.map((s) => s.name).join(', ') || 'no string'}
+            {c.strings.map((s) => s.name).join(', ') || caseTable.noString}
           </span>
         </>
       ),
     },
-    { key: 'site', label: 'Site', sortable: true, from: 'md', cell: (c) => c.siteName },
+    { key: 'site', label: caseTable.site, sortable: true, from: 'md', cell: (c) => c.siteName },
     {
       key: 'state',
-      label: 'State',
+      label: caseTable.state,
       sortable: true,
       cell: (c) => (
         <span className="flex flex-wrap gap-1.5">
@@ -66,19 +67,19 @@ export function CaseTable({ cases, at, view, timeZone, onChange }: Props) {
     },
     {
       key: 'assignee',
-      label: 'Assigned to',
+      label: caseTable.assignedTo,
       sortable: true,
       from: 'md',
-      cell: (c) => c.assignee?.name ?? <span className="text-ink-2">nobody</span>,
+      cell: (c) => c.assignee?.name ?? <span className="text-ink-2">{caseTable.nobody}</span>,
     },
     {
       key: 'due',
-      label: 'Due',
+      label: caseTable.due,
       sortable: true,
       from: 'sm',
       cell: (c) =>
         c.dueOn === null ? (
-          <span className="text-ink-2">no day</span>
+          <span className="text-ink-2">{caseTable.noDay}</span>
         ) : c.overdue ? (
           <Tag tone="rust">{dueWords(c)}</Tag>
         ) : (
@@ -87,7 +88,7 @@ export function CaseTable({ cases, at, view, timeZone, onChange }: Props) {
     },
     {
       key: 'changed',
-      label: 'Changed',
+      label: caseTable.changed,
       sortable: true,
       numeric: true,
       from: 'lg',
@@ -96,7 +97,7 @@ export function CaseTable({ cases, at, view, timeZone, onChange }: Props) {
   ];
   return (
     <Table
-      caption="Cases"
+      caption={caseTable.cases}
       columns={columns}
       rows={cases}
       rowKey={(c) => c.id}
@@ -105,7 +106,7 @@ export function CaseTable({ cases, at, view, timeZone, onChange }: Props) {
         const sort = CASE_SORTS.find((s) => s === key);
         if (sort) onChange({ sort, dir: descending ? 'desc' : 'asc' });
       }}
-      empty={<Notice kind="empty" title="No case fits these filters" />}
+      empty={<Notice kind="empty" title={caseTable.noCaseFitsThese} />}
     />
   );
 }

@@ -6,7 +6,6 @@ import { NotRead } from '../../components/ui/NotRead';
 import { Notice } from '../../components/ui/Notice';
 import { Sheet } from '../../components/ui/Sheet';
 import { CASE_STATE_WORDS, isClosed, type CaseState } from '../../domain/cases/cases';
-import { counted } from '../../drawings/numbers';
 import { api, withQuery, type ApiError } from '../../lib/api';
 import { queryClient } from '../../lib/query-client';
 import { useViewInUrl } from '../../lib/view-in-url';
@@ -19,6 +18,7 @@ import { CASES_DEFAULTS, casesFinding, listedCases } from './list';
 import { MoveDialog } from './MoveDialog';
 import { useCases } from './query';
 import { useKeys } from './use-keys';
+import { casesBoard } from '../../words/case-board';
 
 interface Props {
   initial: CasesPage;
@@ -44,7 +44,7 @@ export function CasesBoard({ initial, view: initialView, timeZone }: Props) {
         }),
       onSuccess: (_, { item, to }) => {
         setClosing(null);
-        setSaid(`Case ${item.number} is now under “${CASE_STATE_WORDS[to]}”.`);
+        setSaid(casesBoard.caseIsNowUnder(item.number, CASE_STATE_WORDS[to]));
       },
       onSettled: () => client.invalidateQueries({ queryKey: ['cases'] }),
     },
@@ -77,20 +77,15 @@ export function CasesBoard({ initial, view: initialView, timeZone }: Props) {
         sentence={words.sentence}
         actions={
           <ButtonLink weight="primary" href={paths.caseNew(view.site === 'all' ? {} : { site: view.site })}>
-            Open a case
+            {casesBoard.openACase}
           </ButtonLink>
         }
       />
       <div role="status" className="mb-4 empty:hidden">
         {said && <Notice kind="done" title={said} />}
       </div>
-      <NotRead
-        error={error}
-        title="The cases could not be read anew"
-        onRetry={() => refetch()}
-        className="mb-4"
-      >
-        What is shown may be old.
+      <NotRead error={error} title={casesBoard.theCasesCouldNot} onRetry={() => refetch()} className="mb-4">
+        {casesBoard.whatIsShownMay}
       </NotRead>
       {move.error && !closing && (
         <div className="mb-4">
@@ -102,16 +97,16 @@ export function CasesBoard({ initial, view: initialView, timeZone }: Props) {
       <Filters page={page} view={view} onChange={setView} />
       <div className="mb-3 flex flex-wrap items-center justify-between gap-x-4">
         <p className="text-sm text-ink-2" role="status">
-          {counted(shown.length, 'case')}
+          {casesBoard.countedShownCase(shown.length)}
           {filtered && (
             <>
-              {` of ${page.cases.length}. `}
+              {casesBoard.ofCases(page.cases.length)}
               <button
                 type="button"
                 className="target -my-3 text-petrol underline underline-offset-[3px]"
                 onClick={() => setView({ ...CASES_DEFAULTS, look: view.look, show: view.show })}
               >
-                Show all
+                {casesBoard.showAll}
               </button>
             </>
           )}
@@ -123,11 +118,10 @@ export function CasesBoard({ initial, view: initialView, timeZone }: Props) {
       {page.cases.length === 0 ? (
         <Notice
           kind="empty"
-          title="There is no case yet"
-          action={<ButtonLink href={paths.caseNew()}>Open a case</ButtonLink>}
+          title={casesBoard.thereIsNoCase}
+          action={<ButtonLink href={paths.caseNew()}>{casesBoard.openACase}</ButtonLink>}
         >
-          A case is opened from a cause, from a string, or by hand. It keeps the figures of that minute and
-          looks again after it was closed.
+          {casesBoard.aCaseIsOpened}
         </Notice>
       ) : view.look === 'board' ? (
         <Board cases={shown} onMove={begin} />
@@ -156,8 +150,13 @@ export function CasesBoard({ initial, view: initialView, timeZone }: Props) {
       />
       {view.look === 'board' && (
         <p className="no-print mt-4 hidden text-sm text-ink-2 md:block">
-          Drag a card, or focus it and press <kbd>[</kbd> or <kbd>]</kbd> to move it; <kbd>?</kbd> lists all
-          keys.
+          {casesBoard.dragACardOr}
+          <kbd>[</kbd>
+          {casesBoard.or}
+          <kbd>]</kbd>
+          {casesBoard.toMoveIt}
+          <kbd>?</kbd>
+          {casesBoard.listsAllKeys}
         </p>
       )}
     </>

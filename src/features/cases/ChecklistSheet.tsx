@@ -12,6 +12,7 @@ import {
 } from '../../domain/cases/checklists';
 import { listed } from '../../drawings/numbers';
 import type { CaseInHand } from './query';
+import { checklistSheet } from '../../words/cases';
 
 /** What to look at before anybody is called. A line is ticked by itself, so that two people may go through it at once. */
 export function ChecklistSheet({ hand }: { hand: CaseInHand }) {
@@ -24,10 +25,14 @@ export function ChecklistSheet({ hand }: { hand: CaseInHand }) {
   const done = items.filter((item) => c.checklist.some((m) => m.key === item.key && m.done)).length;
   const cautions = [...new Set(own.flatMap((item) => item.caution ?? []))];
   return (
-    <Sheet id="checklist" title="Before calling anybody" aside={`${done} of ${items.length} looked at`}>
+    <Sheet
+      id="checklist"
+      title={checklistSheet.beforeCallingAnybody}
+      aside={checklistSheet.ofLookedAt(done, items.length)}
+    >
       {cautions.length > 0 && (
         <div className="mb-3">
-          <Caution strong="Strings stay dangerous in light.">{cautions.join(' ')}</Caution>
+          <Caution strong={checklistSheet.stringsStayDangerousIn}>{cautions.join(' ')}</Caution>
         </div>
       )}
       <ul className="divide-y divide-rule-faint border-y border-rule-faint">
@@ -64,13 +69,13 @@ function Line({ item, hand }: { item: ChecklistItem; hand: CaseInHand }) {
         <span className="min-w-0">
           <span className="block text-[16px] font-medium leading-6">{item.check}</span>
           <span className="block text-ink-2">{item.why}</span>
-          {item.caution && <span className="sr-only">Caution: {item.caution}</span>}
+          {item.caution && <span className="sr-only">{checklistSheet.cautionCaution(item.caution)}</span>}
         </span>
       </label>
       <div className="ml-9 flex flex-wrap items-center gap-x-4 text-sm text-ink-2">
         {mark && (
           <span>
-            {mark.done ? 'Looked at' : 'Taken back'} by {mark.by},{' '}
+            {checklistSheet.doneByBy(mark.done, mark.by)}
             <RelativeTime at={mark.at} now={page.at} timeZone={page.case.timeZone} />
             {mark.note && <>: {mark.note}</>}
           </span>
@@ -81,8 +86,8 @@ function Line({ item, hand }: { item: ChecklistItem; hand: CaseInHand }) {
             className="target text-petrol underline underline-offset-[3px]"
             onClick={() => setNote(mark?.note ?? '')}
           >
-            {mark?.note ? 'Change the note' : 'Add a note'}
-            <span className="sr-only"> to: {item.check}</span>
+            {mark?.note ? checklistSheet.changeTheNote : checklistSheet.addANote}
+            <span className="sr-only">{checklistSheet.toCheck(item.check)}</span>
           </button>
         )}
       </div>
@@ -95,14 +100,14 @@ function Line({ item, hand }: { item: ChecklistItem; hand: CaseInHand }) {
           }}
         >
           <Field
-            label="What was seen"
+            label={checklistSheet.whatWasSeen}
             value={note}
             maxLength={2000}
             className="min-w-[200px] flex-1"
             onChange={(event) => setNote(event.target.value)}
           />
           <Button type="submit" disabled={sent !== null}>
-            Keep the note
+            {checklistSheet.keepTheNote}
           </Button>
         </form>
       )}
@@ -116,7 +121,7 @@ function Called({ hand }: { hand: CaseInHand }) {
   const who = listed([contact.name, contact.phone].filter(Boolean));
   return who ? (
     <p className="mt-2 text-sm text-ink-2">
-      At {c.siteName}: {contact.name}
+      {checklistSheet.atSiteNameContact(c.siteName, contact.name)}
       {contact.phone && (
         <>
           {contact.name && ', '}

@@ -3,12 +3,12 @@ import { useId, useRef, useState, type KeyboardEvent } from 'react';
 import { flushSync } from 'react-dom';
 import { Button } from '../../components/ui/Button';
 import { mentionAt, mentionChoices, mentionedIn, withMention } from '../../domain/cases/mentions';
-import { counted } from '../../drawings/numbers';
 import { api, type ApiError } from '../../lib/api';
 import { queryClient } from '../../lib/query-client';
 import { COMMENT_MAX, type CasePage } from '../../schemas/api/cases';
 import { paths } from '../../schemas/paths';
 import type { CaseInHand } from './query';
+import { commentBox } from '../../words/cases';
 
 /** A comment. After @ the people of the organisation are offered: arrows choose, Enter or Tab takes, Escape leaves. */
 export function CommentBox({ hand }: { hand: CaseInHand }) {
@@ -77,7 +77,7 @@ export function CommentBox({ hand }: { hand: CaseInHand }) {
       }}
     >
       <label htmlFor="comment" className="mb-1 block font-medium">
-        Comment
+        {commentBox.comment}
       </label>
       <div className="relative">
         <textarea
@@ -104,7 +104,7 @@ export function CommentBox({ hand }: { hand: CaseInHand }) {
         <ul
           id={listId}
           role="listbox"
-          aria-label="People to mention"
+          aria-label={commentBox.peopleToMention}
           hidden={!open}
           className="absolute inset-x-0 z-10 -mt-1 border border-ink-3 bg-sheet"
         >
@@ -126,10 +126,10 @@ export function CommentBox({ hand }: { hand: CaseInHand }) {
         </ul>
       </div>
       <p className="sr-only" role="status">
-        {open ? `${counted(offered.length, 'name')} to choose from: ${offered[current]?.name ?? ''}` : ''}
+        {open ? commentBox.toChooseFrom(offered.length, offered[current]?.name) : ''}
       </p>
       <p id={`${listId}-hint`} className="mt-1 text-sm text-ink-2">
-        @ and a name tells somebody.
+        {commentBox.andANameTells}
       </p>
       {write.error && (
         <p role="alert" className="mt-1 text-sm font-medium text-rust-ink">
@@ -137,7 +137,7 @@ export function CommentBox({ hand }: { hand: CaseInHand }) {
         </p>
       )}
       <Button type="submit" className="mt-2" disabled={write.isPending || text.trim() === ''}>
-        Add the comment
+        {commentBox.addTheComment}
       </Button>
     </form>
   );

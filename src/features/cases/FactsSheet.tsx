@@ -17,6 +17,7 @@ import { paths } from '../../schemas/paths';
 import { MoveDialog } from './MoveDialog';
 import type { CaseInHand } from './query';
 import { dueWords } from './words';
+import { factsSheet } from '../../words/cases';
 
 /** State, person, day: what changes most, in reach of a thumb. */
 export function FactsSheet({ hand }: { hand: CaseInHand }) {
@@ -36,10 +37,10 @@ export function FactsSheet({ hand }: { hand: CaseInHand }) {
     else change({ act: 'state', version: c.version, state: to, note: '' });
   };
   return (
-    <Sheet id="facts" title="Where it stands">
+    <Sheet id="facts" title={factsSheet.whereItStands}>
       <div className="grid gap-4">
         <Choice
-          label="State"
+          label={factsSheet.state}
           value={c.state}
           options={CASE_STATES.map((s) => ({ value: s, label: CASE_STATE_WORDS[s] }))}
           onChange={(state) => {
@@ -49,17 +50,17 @@ export function FactsSheet({ hand }: { hand: CaseInHand }) {
         />
         <Choice
           id="assignee"
-          label="Assigned to"
+          label={factsSheet.assignedTo}
           value={c.assignee?.id ?? ''}
           error={send.error?.fault('assignee') ?? null}
           options={[
-            { value: '', label: 'Nobody yet' },
+            { value: '', label: factsSheet.nobodyYet },
             ...page.people.map((p) => ({
               value: p.id,
-              label: p.id === page.me.id ? `${p.name} (you)` : p.name,
+              label: p.id === page.me.id ? factsSheet.nameYou(p.name) : p.name,
             })),
             ...(c.assignee && !page.people.some((p) => p.id === c.assignee?.id)
-              ? [{ value: c.assignee.id, label: `${c.assignee.name} (no longer here)` }]
+              ? [{ value: c.assignee.id, label: factsSheet.noLongerHere(c.assignee.name) }]
               : []),
           ]}
           onChange={(id) => facts({ assignee: id || null })}
@@ -71,21 +72,21 @@ export function FactsSheet({ hand }: { hand: CaseInHand }) {
           </p>
         )}
         <Choice
-          label="Kind"
+          label={factsSheet.kind}
           value={c.kind}
           options={CASE_KINDS.map((k) => ({ value: k, label: CASE_KIND_WORDS[k] }))}
           onChange={(kind) => facts({ kind: CASE_KINDS.find((k) => k === kind) ?? 'other' })}
         />
         <p className="text-sm text-ink-2">
-          Opened {CASE_ORIGIN_WORDS[c.origin]}, {c.openedBy || 'Wakeline'},{' '}
+          {factsSheet.openedOriginOpenedBy(CASE_ORIGIN_WORDS[c.origin], c.openedBy)}
           <RelativeTime at={c.openedAt} now={page.at} timeZone={c.timeZone} />
           {c.cause && (
             <>
-              {'. Cause: '}
+              {factsSheet.cause}
               <a href={paths.cause(c.cause.id)} className="text-petrol underline underline-offset-[3px]">
                 {c.cause.headline}
               </a>
-              {c.cause.open ? ', still open' : ', over'}
+              {c.cause.open ? factsSheet.stillOpen : factsSheet.over}
             </>
           )}
         </p>
@@ -112,7 +113,7 @@ function DueField({ dueOn, onSave }: { dueOn: string | null; onSave: (day: strin
   const [typed, setTyped] = useState(dueOn ?? '');
   return (
     <Field
-      label="Due"
+      label={factsSheet.due}
       type="date"
       value={typed}
       onChange={(event) => setTyped(event.target.value)}

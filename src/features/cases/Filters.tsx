@@ -4,6 +4,7 @@ import { SearchInput } from '../../components/ui/SearchInput';
 import { Segmented } from '../../components/ui/Segmented';
 import { CASE_KINDS, CASE_KIND_WORDS } from '../../domain/cases/cases';
 import type { CasesPage, CasesView } from '../../schemas/api/cases';
+import { filters } from '../../words/case-board';
 
 interface Props {
   page: CasesPage;
@@ -21,10 +22,10 @@ export function Filters({ page, view, onChange }: Props) {
       onSubmit={(event) => event.preventDefault()}
     >
       <Segmented
-        label="Look"
+        label={filters.look}
         options={[
-          { value: 'board', label: 'Board' },
-          { value: 'list', label: 'List' },
+          { value: 'board', label: filters.board },
+          { value: 'list', label: filters.list },
         ]}
         value={view.look}
         onChange={(look) => onChange({ look })}
@@ -35,20 +36,20 @@ export function Filters({ page, view, onChange }: Props) {
         className="target ml-auto text-sm text-petrol underline underline-offset-[3px] sm:hidden"
         onClick={() => setMore(!more)}
       >
-        {more ? 'Fewer filters' : 'More filters'}
+        {more ? filters.fewerFilters : filters.moreFilters}
       </button>
       <SearchInput
-        label="Search by title, string, person or number"
-        placeholder="Search cases"
+        label={filters.searchByTitleString}
+        placeholder={filters.searchCases}
         value={view.q}
         onChange={(q) => onChange({ q }, 'typed')}
       />
       <Segmented
-        label="Whose"
+        label={filters.whose}
         options={[
-          { value: 'all', label: 'Everybody’s' },
-          { value: 'mine', label: 'Mine' },
-          { value: 'unassigned', label: 'Nobody’s' },
+          { value: 'all', label: filters.everybodys },
+          { value: 'mine', label: filters.mine },
+          { value: 'unassigned', label: filters.nobodys },
         ]}
         value={view.who}
         onChange={(who) => onChange({ who })}
@@ -60,39 +61,39 @@ export function Filters({ page, view, onChange }: Props) {
           onChange={(event) => onChange({ due: event.target.checked ? 'overdue' : 'all' })}
           className="h-5 w-5 accent-[var(--petrol)]"
         />
-        Overdue
+        {filters.overdue}
       </label>
       <Choice
         inline
-        label="Site"
+        label={filters.site}
         value={view.site}
         className={`max-w-full [&_select]:max-w-[190px] ${hidden}`}
         options={[
-          { value: 'all', label: 'All sites' },
+          { value: 'all', label: filters.allSites },
           ...page.sites.map((s) => ({ value: s.id, label: s.name })),
         ]}
         onChange={(site) => onChange({ site })}
       />
       <Choice
         inline
-        label="Kind"
+        label={filters.kind}
         value={view.kind}
         className={`max-w-full [&_select]:max-w-[190px] ${hidden}`}
         options={[
-          { value: 'all', label: 'All kinds' },
+          { value: 'all', label: filters.allKinds },
           ...CASE_KINDS.map((k) => ({ value: k, label: CASE_KIND_WORDS[k] })),
         ]}
         onChange={(kind) => onChange({ kind: CASE_KINDS.find((k) => k === kind) ?? 'all' })}
       />
       <Choice
         inline
-        label="Closed"
+        label={filters.closed}
         value={view.show}
         className={hidden}
         options={[
-          { value: 'current', label: 'of 30 days' },
-          { value: 'open', label: 'none' },
-          { value: 'all', label: 'all' },
+          { value: 'current', label: filters.of30Days },
+          { value: 'open', label: filters.none },
+          { value: 'all', label: filters.all },
         ]}
         onChange={(show) => onChange({ show: show === 'open' || show === 'all' ? show : 'current' })}
       />

@@ -6,12 +6,13 @@ import type { CaseEntry } from '../../schemas/api/cases';
 import { CommentBox } from './CommentBox';
 import type { CaseInHand } from './query';
 import { entryWords, OUTCOME_TONE } from './words';
+import { historySheet } from '../../words/cases';
 
 /** Everything that happened to a case, oldest first, and the box for the next comment. */
 export function HistorySheet({ hand }: { hand: CaseInHand }) {
   const { page } = hand;
   return (
-    <Sheet id="history" title="History" aside="Only added to, never changed">
+    <Sheet id="history" title={historySheet.history} aside={historySheet.onlyAddedToNever}>
       <ol className="divide-y divide-rule-faint border-y border-rule-faint">
         {page.entries.map((entry) => (
           <Entry key={entry.id} entry={entry} now={page.at} timeZone={page.case.timeZone} />

@@ -3,6 +3,7 @@ import { Button } from '../../components/ui/Button';
 import { Dialog } from '../../components/ui/Dialog';
 import { CASE_STATE_WORDS, type CaseState } from '../../domain/cases/cases';
 import { TextArea } from './TextArea';
+import { moveDialog } from '../../words/cases';
 
 interface Props {
   /** null: closed. */
@@ -19,7 +20,7 @@ export function MoveDialog({ move, fault, busy, onMove, onClose }: Props) {
   return (
     <Dialog
       open={move !== null}
-      title={move ? `Close case ${move.number}: ${CASE_STATE_WORDS[move.to].toLowerCase()}` : ''}
+      title={move ? moveDialog.closeCase(move.number, CASE_STATE_WORDS[move.to]) : ''}
       onClose={onClose}
     >
       {move && <MoveForm key={`${move.number} ${move.to}`} {...{ done, fault, busy, onMove, onClose }} />}
@@ -38,22 +39,19 @@ function MoveForm({ done, fault, busy, onMove, onClose }: Omit<Props, 'move'> & 
       }}
     >
       <TextArea
-        label={done ? 'What was done' : 'What was looked at'}
+        label={done ? moveDialog.whatWasDone : moveDialog.whatWasLookedAt}
         value={note}
         onChange={setNote}
         rows={4}
         maxLength={2000}
         error={fault}
       />
-      <p className="text-ink-2">
-        Wakeline looks again over the following daylight. Where the figures have not come right, it opens the
-        case again.
-      </p>
+      <p className="text-ink-2">{moveDialog.wakelineLooksAgainOver}</p>
       <div className="flex flex-wrap gap-2">
         <Button type="submit" weight="primary" disabled={busy}>
-          Close the case
+          {moveDialog.closeTheCase}
         </Button>
-        <Button onClick={onClose}>Leave it open</Button>
+        <Button onClick={onClose}>{moveDialog.leaveItOpen}</Button>
       </div>
     </form>
   );

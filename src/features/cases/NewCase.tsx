@@ -13,6 +13,7 @@ import { TITLE_MAX, WHAT_MAX, type CaseDraft } from '../../schemas/api/cases';
 import { paths } from '../../schemas/paths';
 import { PartsPicker } from './PartsPicker';
 import { TextArea } from './TextArea';
+import { newCase } from '../../words/new-case';
 
 /** A new case: from a cause, from a string, or by hand. */
 export function NewCase({ initial }: { initial: CaseDraft }) {
@@ -55,22 +56,22 @@ export function NewCase({ initial }: { initial: CaseDraft }) {
   const fault = (field: string) => open.error?.fault(field) ?? null;
   const shown = ['title', 'what', 'kind', 'site', 'strings', 'parts', 'assignee', 'dueOn'];
   const elsewhere = open.error && !shown.some((f) => fault(f));
-  const siteMissing = open.error && draft.site === null ? 'Choose the site.' : fault('site');
+  const siteMissing = open.error && draft.site === null ? newCase.chooseTheSite : fault('site');
   return (
     <>
       <Heading
-        crumbs={[{ label: 'Cases', href: paths.cases() }, { label: 'New case' }]}
-        finding={draft.cause ? `Open a case: ${draft.cause.headline}` : 'Open a case'}
-        sentence="It keeps the figures of this minute: voltages, states of units, energy and light."
+        crumbs={[{ label: newCase.cases, href: paths.cases() }, { label: newCase.newCase }]}
+        finding={draft.cause ? newCase.openCase(draft.cause.headline) : newCase.openACase}
+        sentence={newCase.itKeepsTheFigures}
       />
       {draft.existing && (
         <div className="mb-5">
           <Notice
             kind="stale"
-            title={`Case ${draft.existing.number} is open for this cause already`}
+            title={newCase.caseIsOpenFor(draft.existing.number)}
             action={
               <ButtonLink href={paths.caseFile(draft.existing.id)}>
-                Go to case {draft.existing.number}
+                {newCase.goToCase(draft.existing.number)}
               </ButtonLink>
             }
           >
@@ -93,12 +94,12 @@ export function NewCase({ initial }: { initial: CaseDraft }) {
             </Notice>
           )}
           <Choice
-            label="Site"
+            label={newCase.site}
             value={draft.site ?? ''}
             disabled={draft.origin !== 'hand'}
             error={siteMissing}
             options={[
-              ...(draft.site === null ? [{ value: '', label: 'Choose' }] : []),
+              ...(draft.site === null ? [{ value: '', label: newCase.choose }] : []),
               ...draft.sites.map((s) => ({ value: s.id, label: s.name })),
             ]}
             onChange={(site) => {
@@ -107,7 +108,7 @@ export function NewCase({ initial }: { initial: CaseDraft }) {
             }}
           />
           <Field
-            label="Title"
+            label={newCase.title}
             value={draft.title}
             maxLength={TITLE_MAX}
             autoComplete="off"
@@ -115,7 +116,7 @@ export function NewCase({ initial }: { initial: CaseDraft }) {
             onChange={(event) => change({ title: event.target.value })}
           />
           <TextArea
-            label="What is wrong"
+            label={newCase.whatIsWrong}
             value={draft.what}
             rows={5}
             maxLength={WHAT_MAX}
@@ -123,13 +124,13 @@ export function NewCase({ initial }: { initial: CaseDraft }) {
             onChange={(what) => change({ what })}
           />
           <Choice
-            label="Kind"
+            label={newCase.kind}
             value={draft.kind}
-            hint="It decides what the checklist asks, and how Wakeline looks again after closing."
+            hint={newCase.itDecidesWhatThe}
             options={CASE_KINDS.map((k) => ({ value: k, label: CASE_KIND_WORDS[k] }))}
             onChange={(kind) => change({ kind: CASE_KINDS.find((k) => k === kind) ?? 'other' })}
           />
-          {ofSite.error && <Notice kind="failed" title="The strings of this site could not be read" />}
+          {ofSite.error && <Notice kind="failed" title={newCase.theStringsOfThis} />}
           {draft.site !== null && !ofSite.isPending && (
             <PartsPicker
               strings={draft.strings}
@@ -141,17 +142,17 @@ export function NewCase({ initial }: { initial: CaseDraft }) {
           )}
           <div className="grid gap-5 sm:grid-cols-2">
             <Choice
-              label="Assigned to"
+              label={newCase.assignedTo}
               value={assignee}
               error={fault('assignee')}
               options={[
-                { value: '', label: 'Nobody yet' },
+                { value: '', label: newCase.nobodyYet },
                 ...draft.people.map((p) => ({ value: p.id, label: p.name })),
               ]}
               onChange={setAssignee}
             />
             <Field
-              label="Due"
+              label={newCase.due}
               type="date"
               value={dueOn}
               error={fault('dueOn')}
@@ -160,9 +161,9 @@ export function NewCase({ initial }: { initial: CaseDraft }) {
           </div>
           <div className="flex flex-wrap gap-2">
             <Button type="submit" weight="primary" disabled={open.isPending || open.isSuccess}>
-              Open the case
+              {newCase.openTheCase}
             </Button>
-            <ButtonLink href={paths.cases()}>Leave it</ButtonLink>
+            <ButtonLink href={paths.cases()}>{newCase.leaveIt}</ButtonLink>
           </div>
         </form>
       </Sheet>

@@ -1,4 +1,5 @@
 import { useId, useState } from 'react';
+import { partsPicker } from '../../words/new-case';
 
 export interface PartDraft {
   string: string;
@@ -37,9 +38,9 @@ export function PartsPicker({ strings, chosen, parts, onChange, error }: Props) 
   };
   return (
     <fieldset aria-describedby={error ? `${id}-error` : undefined}>
-      <legend className="mb-1 font-medium">What it is about</legend>
+      <legend className="mb-1 font-medium">{partsPicker.whatItIsAbout}</legend>
       {strings.length === 0 ? (
-        <p className="text-ink-2">This site has no strings on its as-built yet.</p>
+        <p className="text-ink-2">{partsPicker.thisSiteHasNo}</p>
       ) : (
         <div className="flex max-h-[220px] flex-wrap gap-2 overflow-y-auto border border-rule p-2">
           {inOrder.map((s) => (
@@ -63,10 +64,10 @@ export function PartsPicker({ strings, chosen, parts, onChange, error }: Props) 
         .map((s) => (
           <fieldset key={s.id} className="mt-3">
             <legend className="mb-1 text-sm text-ink-2">
-              Positions of {s.name}
-              {parts.some((p) => p.string === s.id && p.position !== null)
-                ? ''
-                : ': none chosen, so the whole string'}
+              {partsPicker.positionsOf(
+                s.name,
+                parts.some((p) => p.string === s.id && p.position !== null),
+              )}
             </legend>
             <div className="flex flex-wrap gap-1">
               {Array.from({ length: s.units }, (_, i) => i + 1).map((position) => {
@@ -79,7 +80,7 @@ export function PartsPicker({ strings, chosen, parts, onChange, error }: Props) 
                     <input
                       type="checkbox"
                       className="sr-only"
-                      aria-label={`Position ${position} of ${s.name}`}
+                      aria-label={partsPicker.positionOf(position, s.name)}
                       checked={on}
                       onChange={() => togglePosition(s.id, position)}
                     />

@@ -1,7 +1,6 @@
 import { useState } from 'react';
 import { Button } from '../../components/ui/Button';
 import { Sheet } from '../../components/ui/Sheet';
-import { counted, percent } from '../../drawings/numbers';
 import { fullTime } from '../../drawings/times';
 import { ApiError, withQuery } from '../../lib/api';
 import { uploadFile } from '../../lib/upload';
@@ -9,6 +8,7 @@ import { PHOTO_TYPES } from '../../schemas/api/attachments';
 import type { CasePage } from '../../schemas/api/cases';
 import { paths } from '../../schemas/paths';
 import type { CaseInHand } from './query';
+import { photosSheet } from '../../words/cases';
 
 interface Sending {
   ref: string;
@@ -40,7 +40,7 @@ export function PhotosSheet({ hand }: { hand: CaseInHand }) {
       take(next);
       setSending((all) => all.filter((s) => s.ref !== one.ref));
     } catch (error) {
-      patch(one.ref, { error: error instanceof ApiError ? error.message : 'It could not be sent.' });
+      patch(one.ref, { error: error instanceof ApiError ? error.message : photosSheet.itCouldNotBe });
     }
   };
   const add = async (files: File[]): Promise<void> => {
@@ -50,7 +50,7 @@ export function PhotosSheet({ hand }: { hand: CaseInHand }) {
     for (const one of fresh) await send(one);
   };
   return (
-    <Sheet id="photos" title="Photos" aside={counted(page.photos.length, 'photo')}>
+    <Sheet id="photos" title={photosSheet.photos} aside={photosSheet.countedPhotosPhoto(page.photos.length)}>
       {page.photos.length > 0 && (
         <ul className="mb-4 grid grid-cols-3 gap-2 sm:grid-cols-4">
           {page.photos.map((photo) => (
@@ -80,15 +80,15 @@ export function PhotosSheet({ hand }: { hand: CaseInHand }) {
                     className="mt-1 block h-1 w-full accent-petrol"
                     value={one.share}
                     max={1}
-                    aria-label={`${one.file.name}: ${percent(one.share)} sent`}
+                    aria-label={photosSheet.fileShareSent(one.file.name, one.share)}
                   />
                 )}
               </span>
               {one.error && (
                 <>
-                  <Button onClick={() => void send(one)}>Send again</Button>
+                  <Button onClick={() => void send(one)}>{photosSheet.sendAgain}</Button>
                   <Button onClick={() => setSending((all) => all.filter((s) => s.ref !== one.ref))}>
-                    Leave it
+                    {photosSheet.leaveIt}
                   </Button>
                 </>
               )}
@@ -97,8 +97,8 @@ export function PhotosSheet({ hand }: { hand: CaseInHand }) {
         </ul>
       )}
       <div className="no-print flex flex-wrap gap-2">
-        <PhotoButton label="Take a photo" camera onTaken={(files) => void add(files)} />
-        <PhotoButton label="Choose photos" onTaken={(files) => void add(files)} />
+        <PhotoButton label={photosSheet.takeAPhoto} camera onTaken={(files) => void add(files)} />
+        <PhotoButton label={photosSheet.choosePhotos} onTaken={(files) => void add(files)} />
       </div>
     </Sheet>
   );

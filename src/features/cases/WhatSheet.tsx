@@ -8,6 +8,7 @@ import { paths } from '../../schemas/paths';
 import { PartsPicker } from './PartsPicker';
 import type { CaseInHand } from './query';
 import { TextArea } from './TextArea';
+import { whatSheet } from '../../words/cases';
 
 /** What is wrong and which parts it is about. */
 export function WhatSheet({
@@ -23,7 +24,7 @@ export function WhatSheet({
   return (
     <Sheet
       id="what"
-      title="What is wrong"
+      title={whatSheet.whatIsWrong}
       aside={
         !editing && (
           <button
@@ -31,7 +32,7 @@ export function WhatSheet({
             className="target -my-3 text-petrol underline underline-offset-[3px]"
             onClick={() => onEdit(true)}
           >
-            Change
+            {whatSheet.change}
           </button>
         )
       }
@@ -43,7 +44,7 @@ export function WhatSheet({
           {c.what}
         </p>
       ) : (
-        <p className="text-ink-2">Nothing is written down yet.</p>
+        <p className="text-ink-2">{whatSheet.nothingIsWrittenDown}</p>
       )}
       {!editing && <Parts page={hand.page} />}
     </Sheet>
@@ -83,14 +84,14 @@ function EditForm({ hand, onDone }: { hand: CaseInHand; onDone: () => void }) {
       }}
     >
       <Field
-        label="Title"
+        label={whatSheet.title}
         value={title}
         maxLength={TITLE_MAX}
         error={send.error?.fault('title') ?? null}
         onChange={(event) => setTitle(event.target.value)}
       />
       <TextArea
-        label="What is wrong"
+        label={whatSheet.whatIsWrong}
         value={what}
         rows={6}
         maxLength={WHAT_MAX}
@@ -106,9 +107,9 @@ function EditForm({ hand, onDone }: { hand: CaseInHand; onDone: () => void }) {
       />
       <div className="flex flex-wrap gap-2">
         <Button type="submit" weight="primary" disabled={send.isPending}>
-          Save
+          {whatSheet.save}
         </Button>
-        <Button onClick={onDone}>Leave it as it was</Button>
+        <Button onClick={onDone}>{whatSheet.leaveItAsIt}</Button>
       </div>
     </form>
   );
@@ -116,10 +117,7 @@ function EditForm({ hand, onDone }: { hand: CaseInHand; onDone: () => void }) {
 
 function Parts({ page }: { page: CasePage }) {
   const { strings, siteId, parts } = page.case;
-  if (strings.length === 0)
-    return (
-      <p className="mt-4 text-sm text-ink-2">No string is named: Wakeline can’t look again by itself.</p>
-    );
+  if (strings.length === 0) return <p className="mt-4 text-sm text-ink-2">{whatSheet.noStringIsNamed}</p>;
   return (
     <ul className="mt-4 divide-y divide-rule-faint border-t border-rule-faint">
       {strings.map((s) => {
@@ -132,10 +130,10 @@ function Parts({ page }: { page: CasePage }) {
               href={paths.string(siteId, s.id)}
               className="target inline-flex items-center font-medium text-petrol underline underline-offset-[3px]"
             >
-              String {s.name}
+              {whatSheet.stringName(s.name)}
             </a>
             {units.length === 0 ? (
-              <span className="text-ink-2">the whole string</span>
+              <span className="text-ink-2">{whatSheet.theWholeString}</span>
             ) : (
               <ul className="flex flex-wrap gap-x-4 gap-y-1">
                 {units.map((u) => (
@@ -144,7 +142,8 @@ function Parts({ page }: { page: CasePage }) {
                       href={`${paths.string(siteId, s.id)}#units`}
                       className="target inline-flex items-center hover:underline"
                     >
-                      position {u.position}
+                      {whatSheet.position}
+                      {u.position}
                       {u.serial && <span className="ml-1.5 text-sm text-ink-2">{u.serial}</span>}
                     </a>
                   </li>

@@ -1,6 +1,6 @@
 import { CASE_KIND_WORDS, CASE_STATES, isClosed } from '../../domain/cases/cases';
-import { countAtStart } from '../../drawings/numbers';
 import type { CaseItem, CasesPage, CasesView } from '../../schemas/api/cases';
+import { caseBoardList } from '../../words/case-board';
 
 export const CASES_DEFAULTS: CasesView = {
   look: 'board',
@@ -76,17 +76,20 @@ export function casesFinding({ cases, me }: CasesPage): { finding: string; sente
   const nobodys = open.filter((c) => c.assignee === null).length;
   if (open.length === 0)
     return {
-      finding: 'No case is open',
-      sentence: 'Open one from a cause, from a string, or by hand; it keeps the figures of that minute.',
+      finding: caseBoardList.noCaseIsOpen,
+      sentence: caseBoardList.openOneFromA,
     };
   const parts = [
-    overdue > 0 ? `${overdue} ${overdue === 1 ? 'is' : 'are'} overdue` : 'none is overdue',
-    mine > 0 ? `${mine} ${mine === 1 ? 'is' : 'are'} yours` : '',
-    nobodys > 0 ? `${nobodys} ${nobodys === 1 ? 'has' : 'have'} nobody yet` : '',
+    overdue > 0 ? caseBoardList.overdueOverdueOverdue(overdue) : caseBoardList.noneIsOverdue,
+    mine > 0 ? caseBoardList.mineMineYours(mine) : '',
+    nobodys > 0 ? caseBoardList.nobodyYet(nobodys) : '',
   ].filter(Boolean);
-  const list = parts.length > 1 ? `${parts.slice(0, -1).join(', ')} and ${parts.at(-1)}` : (parts[0] ?? '');
+  const list =
+    parts.length > 1
+      ? caseBoardList.partsAndAt(parts.slice(0, -1).join(', '), parts.at(-1))
+      : (parts[0] ?? '');
   return {
-    finding: open.length === 1 ? 'One case is open' : `${countAtStart(open.length)} cases are open`,
+    finding: open.length === 1 ? caseBoardList.oneCaseIsOpen : caseBoardList.casesAreOpen(open.length),
     sentence: `${list[0]?.toUpperCase() ?? ''}${list.slice(1)}.`,
   };
 }

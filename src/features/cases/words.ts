@@ -7,6 +7,7 @@ import {
 import type { Tone } from '../../components/ui/Tag';
 import { shortDate } from '../../drawings/times';
 import type { CaseEntry, CaseItem } from '../../schemas/api/cases';
+import { casesWords } from '../../words/cases';
 
 export const STATE_TONE: Record<CaseState, Tone> = {
   open: 'rust',
@@ -23,10 +24,10 @@ export const STATE_SHAPE: Record<CaseState, string> = {
 
 /** What each column of the board is for. */
 export const STATE_MEANS: Record<CaseState, string> = {
-  open: 'Somebody is to act',
-  waiting: 'For a part, a visit, an answer',
-  done: 'Put right; Wakeline looks again',
-  no_fault_found: 'Looked at, nothing wrong',
+  open: casesWords.somebodyIsToAct,
+  waiting: casesWords.forAPartA,
+  done: casesWords.putRightWakelineLooks,
+  no_fault_found: casesWords.lookedAtNothingWrong,
 };
 
 export const OUTCOME_TONE: Record<CheckOutcome, Tone> = {
@@ -39,7 +40,7 @@ export const OUTCOME_TONE: Record<CheckOutcome, Tone> = {
 export function dueWords(c: Pick<CaseItem, 'dueOn' | 'overdue'>): string {
   if (!c.dueOn) return '';
   const day = shortDate(`${c.dueOn}T12:00:00Z`, 'UTC');
-  return c.overdue ? `overdue since ${day}` : `due ${day}`;
+  return c.overdue ? casesWords.overdueSince(day) : casesWords.dueDay(day);
 }
 
 const isState = (value: unknown): value is CaseState =>
@@ -61,42 +62,44 @@ export function entryWords(entry: CaseEntry): string {
   const { detail } = entry;
   switch (entry.kind) {
     case 'opened':
-      return detail.origin === 'customer' ? 'reported this' : 'opened the case';
+      return detail.origin === 'customer' ? casesWords.reportedThis : casesWords.openedTheCase;
     case 'comment':
-      return 'wrote';
+      return casesWords.wrote;
     case 'change':
-      return `changed ${changesOf(entry)
-        .map((c) =>
-          c.field === 'what is wrong' ? 'what is wrong' : `${c.field}: ${short(c.from)} → ${short(c.to)}`,
-        )
-        .join('; ')}`;
+      return casesWords.changedMap(
+        changesOf(entry)
+          .map((c) =>
+            c.field === 'what is wrong' ? 'what is wrong' : `${c.field}: ${short(c.from)} → ${short(c.to)}`,
+          )
+          .join('; '),
+      );
     case 'checklist':
-      return `${detail.done === true ? 'checked' : 'took back'}: ${String(detail.check ?? '')}`;
+      return `${detail.done === true ? casesWords.checked : casesWords.tookBack}: ${String(detail.check ?? '')}`;
     case 'photo':
-      return `added the photo ${String(detail.name ?? '')}`;
+      return casesWords.addedThePhoto(String(detail.name ?? ''));
     case 'state':
-      return isState(detail.to) ? `moved it to ${CASE_STATE_WORDS[detail.to].toLowerCase()}` : 'moved it';
+      return isState(detail.to) ? casesWords.movedItTo(CASE_STATE_WORDS[detail.to]) : casesWords.movedIt;
     case 'checked': {
       const outcome = detail.outcome as CheckOutcome;
-      return `looked again: ${CHECK_OUTCOME_WORDS[outcome] ?? ''}`;
+      return casesWords.lookedAgain(CHECK_OUTCOME_WORDS[outcome]);
     }
     case 'reopened':
-      return 'opened the case again';
+      return casesWords.openedTheCaseAgain;
   }
 }
 
 /** Keys of the board and list, for the list of keys. */
 export const CASES_KEYS = [
-  ['n', 'Open a case'],
-  ['b l', 'Board, list'],
-  ['m u o', 'Mine, nobody’s, overdue'],
-  ['[ ]', 'Move the card that has the focus'],
-  ['← →', 'From column to column on the board'],
+  ['n', casesWords.openACase],
+  ['b l', casesWords.boardList],
+  ['m u o', casesWords.mineNobodysOverdue],
+  ['[ ]', casesWords.moveTheCardThat],
+  ['← →', casesWords.fromColumnToColumn],
 ] as const;
 
 /** Keys of one case. */
 export const CASE_KEYS = [
-  ['c', 'Write a comment'],
-  ['e', 'Change what is wrong'],
-  ['a', 'Give it to somebody'],
+  ['c', casesWords.writeAComment],
+  ['e', casesWords.changeWhatIsWrong],
+  ['a', casesWords.giveItToSomebody],
 ] as const;

@@ -5,26 +5,20 @@ import { Caution } from '../../components/ui/Caution';
 import { Sheet } from '../../components/ui/Sheet';
 import { SiteTime } from '../../components/ui/Time';
 import { eventWords } from '../../domain/verdicts/event-words';
-import { percent } from '../../drawings/numbers';
 import type { CausePage } from '../../schemas/api/causes';
 import { paths } from '../../schemas/paths';
 import { figuresOf } from './figures';
 import { lossWords } from './words';
+import { causeCard } from '../../words/causes';
 
 /** What to treat as live and whom to call: before everything else on the card. */
 export function HazardSheet({ cause }: { cause: CausePage }) {
   const [taken, setTaken] = useState(cause.acknowledged);
   return (
-    <section aria-label="What to treat as live" className="mb-5">
-      <Caution strong="Treat every string of this site as live.">
-        Isolate, lock out, prove dead with a rated meter at each home run before anybody touches a conductor.
-        Shutdown is not isolation: each module and its leads to its unit stay at module voltage. Local code
-        and qualified people come first. Wakeline watches; it can’t switch anything off.
-      </Caution>
-      <Sheet className="mt-3" title={`Call ${cause.contact?.name || cause.siteName}`}>
-        <p className="text-[15px] text-ink-2">
-          Who is on site must not rely on the shutdown. A hazard can’t be muted, only taken on with a name.
-        </p>
+    <section aria-label={causeCard.whatToTreatAs} className="mb-5">
+      <Caution strong={causeCard.treatEveryStringOf}>{causeCard.isolateLockOutProve}</Caution>
+      <Sheet className="mt-3" title={causeCard.callContact(cause.contact?.name, cause.siteName)}>
+        <p className="text-[15px] text-ink-2">{causeCard.whoIsOnSite}</p>
         {cause.contact?.phone && !taken && (
           <p className="mt-2">
             <a
@@ -59,11 +53,12 @@ function Units({ cause }: { cause: CausePage }) {
             href={paths.string(cause.siteId, id)}
             className="target flex items-center font-medium text-petrol hover:underline"
           >
-            String {units[0]?.stringName}
+            {causeCard.string}
+            {units[0]?.stringName}
           </a>
           <p className="self-center text-sm text-ink-2">
             {units.every((u) => u.position === null)
-              ? 'the string as a whole; positions unknown'
+              ? causeCard.theStringAsA
               : units.map((u) => `${u.position ?? '?'}${u.serial ? ` (${u.serial})` : ''}`).join(', ')}
           </p>
         </li>
@@ -76,12 +71,12 @@ function Units({ cause }: { cause: CausePage }) {
 export function CauseCard({ cause }: { cause: CausePage }) {
   const time = { now: cause.at, timeZone: cause.timeZone };
   const figures = figuresOf(cause);
-  const perDay = lossWords(cause.lossWhDay, cause.lossMoneyDay, cause.currency, ' a day');
+  const perDay = lossWords(cause.lossWhDay, cause.lossMoneyDay, cause.currency, causeCard.aDay);
   const upToNow = lossWords(cause.lossWh, cause.lossMoney, cause.currency);
   return (
     <div className="grid items-start gap-5 lg:grid-cols-[minmax(0,3fr)_minmax(0,2fr)]">
       <div className="grid min-w-0 gap-5">
-        <Sheet id="evidence" title="What shows it" aside={`${percent(cause.confidence)} sure`}>
+        <Sheet id="evidence" title={causeCard.whatShowsIt} aside={causeCard.confidenceSure(cause.confidence)}>
           <p className="text-[15px] leading-[22px]">{cause.evidence}</p>
           {figures.length > 0 && (
             <dl className="mt-3 grid gap-x-6 border-t border-rule-faint pt-2 sm:grid-cols-2">
@@ -97,10 +92,12 @@ export function CauseCard({ cause }: { cause: CausePage }) {
             </dl>
           )}
           {cause.alternatives.length > 0 && (
-            <p className="mt-3 text-ink-2">It could also be: {alternativesInWords(cause.alternatives)}.</p>
+            <p className="mt-3 text-ink-2">
+              {causeCard.itCouldAlsoBe(alternativesInWords(cause.alternatives))}
+            </p>
           )}
         </Sheet>
-        <Sheet id="checks" title="What to check first">
+        <Sheet id="checks" title={causeCard.whatToCheckFirst}>
           <ol className="divide-y divide-rule-faint">
             {cause.checks.map((c, i) => (
               <li key={c.check} className="grid grid-cols-[24px_minmax(0,1fr)] py-2">
@@ -110,7 +107,7 @@ export function CauseCard({ cause }: { cause: CausePage }) {
                   <p className="text-sm text-ink-2">{c.why}</p>
                   {c.caution && (
                     <div className="mt-2">
-                      <Caution strong="Before anybody acts:">{c.caution}</Caution>
+                      <Caution strong={causeCard.beforeAnybodyActs}>{c.caution}</Caution>
                     </div>
                   )}
                 </div>
@@ -123,40 +120,36 @@ export function CauseCard({ cause }: { cause: CausePage }) {
       <div className="grid min-w-0 gap-5">
         <Sheet
           id="units"
-          title={isShared(cause.sharedPart) ? `What they share: ${partName(cause.sharedPart)}` : 'Where'}
+          title={
+            isShared(cause.sharedPart) ? causeCard.whatTheyShare(partName(cause.sharedPart)) : causeCard.where
+          }
         >
           <Units cause={cause} />
         </Sheet>
-        <Sheet id="loss" title="What it costs">
+        <Sheet id="loss" title={causeCard.whatItCosts}>
           {perDay || upToNow ? (
             <dl className="grid gap-1">
               {perDay && (
                 <div className="flex justify-between gap-4">
-                  <dt className="text-ink-2">About</dt>
+                  <dt className="text-ink-2">{causeCard.about}</dt>
                   <dd className="font-semibold tabular-nums">{perDay}</dd>
                 </div>
               )}
               {upToNow && (
                 <div className="flex justify-between gap-4">
-                  <dt className="text-ink-2">So far</dt>
+                  <dt className="text-ink-2">{causeCard.soFar}</dt>
                   <dd className="font-semibold tabular-nums">{upToNow}</dd>
                 </div>
               )}
             </dl>
           ) : (
-            <p className="text-ink-2">{cause.hazard ? 'It is no matter of energy.' : 'Not known.'}</p>
+            <p className="text-ink-2">{cause.hazard ? causeCard.itIsNoMatter : causeCard.notKnown}</p>
           )}
           {cause.lossMoney === null && (perDay || upToNow) && (
-            <p className="mt-2 text-sm text-ink-2">
-              No money is shown:{' '}
-              {cause.currency === null
-                ? 'the organisation has no currency set'
-                : 'the site has no price of a kWh'}
-              .
-            </p>
+            <p className="mt-2 text-sm text-ink-2">{causeCard.noMoneyIsShown(cause.currency)}</p>
           )}
         </Sheet>
-        <Sheet id="history" title="What happened">
+        <Sheet id="history" title={causeCard.whatHappened}>
           <ol className="divide-y divide-rule-faint">
             {cause.events.map((e) => {
               const { words } = eventWords(e.kind, e.detail);
@@ -173,7 +166,7 @@ export function CauseCard({ cause }: { cause: CausePage }) {
               <p className="text-ink-2">
                 <SiteTime at={cause.since} {...time} zone />
               </p>
-              <p>It began, as far as reports show</p>
+              <p>{causeCard.itBeganAsFar}</p>
             </li>
           </ol>
         </Sheet>

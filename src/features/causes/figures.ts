@@ -2,6 +2,7 @@ import { z } from 'zod';
 import { number, percent, quantity } from '../../drawings/numbers';
 import { shortDate } from '../../drawings/times';
 import type { CausePage } from '../../schemas/api/causes';
+import { causesFigures } from '../../words/causes';
 
 /** The figures of a finding as a list of names and values. What an older version kept differently is left out. */
 
@@ -67,7 +68,8 @@ export function figuresOf(cause: Pick<CausePage, 'kind' | 'figures'>): Figure[] 
   }
 }
 
-const range = (low: number, high: number, of: (x: number) => string): string => `${of(low)} to ${of(high)}`;
+const range = (low: number, high: number, of: (x: number) => string): string =>
+  causesFigures.lowToHigh(of(low), of(high));
 
 function lowFigures(f: z.infer<typeof low> | undefined): Figure[] {
   if (!f) return [];
@@ -75,24 +77,24 @@ function lowFigures(f: z.infer<typeof low> | undefined): Figure[] {
   return [
     ...f.days.map((d) => ({
       label: shortDate(`${d.day}T12:00:00Z`, 'UTC'),
-      value: `${percent(d.ratio)} of expected${d.z === null ? '' : `, z ${number(d.z, 1)}`}${d.low ? '' : ' (not low)'}`,
+      value: causesFigures.ratioOfExpectedZ(d.ratio, d.z, d.low),
     })),
-    { label: 'Low below', value: `${percent(f.threshold.ratio)}: ${f.threshold.source}` },
+    { label: causesFigures.lowBelow, value: `${percent(f.threshold.ratio)}: ${f.threshold.source}` },
     ...(f.loss
-      ? [{ label: 'Missing, nine times in ten', value: range(f.loss.low, f.loss.high, percent) }]
+      ? [{ label: causesFigures.missingNineTimesIn, value: range(f.loss.low, f.loss.high, percent) }]
       : []),
     ...(s?.voltageRatio == null
       ? []
-      : [{ label: 'Voltage over the others’', value: number(s.voltageRatio, 3) }]),
+      : [{ label: causesFigures.voltageOverTheOthers, value: number(s.voltageRatio, 3) }]),
     ...(s?.currentRatio == null
       ? []
-      : [{ label: 'Current over the others’', value: number(s.currentRatio, 3) }]),
+      : [{ label: causesFigures.currentOverTheOthers, value: number(s.currentRatio, 3) }]),
     ...(s?.modulesMissing == null || Math.abs(s.modulesMissing) < 0.1
       ? []
-      : [{ label: 'Voltage missing, in modules', value: number(s.modulesMissing, 2) }]),
+      : [{ label: causesFigures.voltageMissingInModules, value: number(s.modulesMissing, 2) }]),
     {
-      label: 'Held against',
-      value: f.method === 'siblings' ? 'the strings of its plane' : 'the model: too few strings to compare',
+      label: causesFigures.heldAgainst,
+      value: f.method === 'siblings' ? causesFigures.theStringsOfIts : causesFigures.theModelTooFew,
     },
   ];
 }
@@ -101,34 +103,34 @@ const ohm = (x: number): string => quantity(x, 'Ω', 2);
 function loopFigures(f: z.infer<typeof loop> | undefined): Figure[] {
   if (!f?.fit || !f.above) return [];
   return [
-    { label: `More than ${f.above.comparedWith}`, value: ohm(f.above.ohm) },
-    { label: '95 % sure', value: range(f.above.low, f.above.high, ohm) },
-    { label: 'Whole loop', value: ohm(f.fit.ohm) },
-    { label: 'Looked at above', value: `${ohm(f.threshold.ohm)}: ${f.threshold.source}` },
+    { label: causesFigures.moreThan(f.above.comparedWith), value: ohm(f.above.ohm) },
+    { label: causesFigures.n95Sure, value: range(f.above.low, f.above.high, ohm) },
+    { label: causesFigures.wholeLoop, value: ohm(f.fit.ohm) },
+    { label: causesFigures.lookedAtAbove, value: `${ohm(f.threshold.ohm)}: ${f.threshold.source}` },
     ...(f.heatW === null
       ? []
-      : [{ label: `Heat at ${quantity(f.fit.highestA, 'A', 1)}`, value: quantity(f.heatW, 'W') }]),
-    { label: 'Samples', value: number(f.fit.samples) },
+      : [{ label: causesFigures.heatAt(f.fit.highestA), value: quantity(f.heatW, 'W') }]),
+    { label: causesFigures.samples, value: number(f.fit.samples) },
   ];
 }
 
 const weakFigures = (f: z.infer<typeof weak> | undefined): Figure[] =>
   f
     ? [
-        { label: 'Voltage over its neighbours’', value: percent(f.ratio) },
-        { label: 'Share of the quarters under load', value: percent(f.share) },
-        { label: 'Weak below', value: `${percent(f.threshold.ratio)}: ${f.threshold.source}` },
+        { label: causesFigures.voltageOverItsNeighbours, value: percent(f.ratio) },
+        { label: causesFigures.shareOfTheQuarters, value: percent(f.share) },
+        { label: causesFigures.weakBelow, value: `${percent(f.threshold.ratio)}: ${f.threshold.source}` },
       ]
     : [];
 
 const memberFigures = (units: z.infer<typeof member> | undefined): Figure[] =>
   (units ?? []).flatMap((u) => [
     {
-      label: `${u.string} position ${u.position}, off its own string`,
-      value: u.apartOwn === null ? 'not known' : percent(u.apartOwn, 1),
+      label: causesFigures.positionOffItsOwn(u.string, u.position),
+      value: u.apartOwn === null ? causesFigures.notKnown : percent(u.apartOwn, 1),
     },
     {
-      label: `${u.string} position ${u.position}, off ${u.otherString ?? 'the other'}`,
-      value: u.apartOther === null ? 'not known' : percent(u.apartOther, 1),
+      label: causesFigures.positionOff(u.string, u.position, u.otherString),
+      value: u.apartOther === null ? causesFigures.notKnown : percent(u.apartOther, 1),
     },
   ]);

@@ -19,37 +19,38 @@ import { paths } from '../../schemas/paths';
 import { PeriodPicker } from './PeriodPicker';
 import { shownRows } from '../../schemas/api/figures-order';
 import { YearOnYear } from './YearOnYear';
+import { fleetFiguresPage } from '../../words/figures';
 
 function cardsOf({ total, worth, currency }: FleetFigures): Card[] {
   if (!total) return [];
   return [
     {
-      label: 'Specific yield',
+      label: fleetFiguresPage.specificYield,
       figure: quantity(total.specificYieldKWhKWp, 'kWh/kWp', 1),
-      note: 'of all modules together',
+      note: fleetFiguresPage.ofAllModulesTogether,
     },
     {
-      label: 'Performance ratio',
+      label: fleetFiguresPage.performanceRatio,
       figure: number(total.performanceRatio, 3),
       note:
         total.performanceRatio === null
-          ? 'no sensor in any plane'
-          : `at 25 °C ${number(total.performanceRatioStc, 3)}; light measured in ${percent(total.completenessLight)} of the time`,
+          ? fleetFiguresPage.noSensorInAny
+          : fleetFiguresPage.atLightMeasuredIn(total.performanceRatioStc, total.completenessLight),
     },
     {
-      label: 'Availability',
+      label: fleetFiguresPage.availability,
       figure: total.availability === null ? UNKNOWN : percent(total.availability, 2),
-      note: `${quantity(total.lostMinutes / 60, 'h', 1)} of light lost over all sites`,
+      note: fleetFiguresPage.ofLightLostOver(total.lostMinutes),
     },
     {
-      label: currency && worth ? 'Worth' : 'Data',
+      label: currency && worth ? fleetFiguresPage.worth : fleetFiguresPage.data,
       figure: currency && worth ? money(worth.money, currency) : percent(total.completeness, 1),
       note:
         currency && worth
           ? worth.unpricedKWh > 0
-            ? `${energy(worth.unpricedKWh * 1000)} without a price`
-            : 'at each day’s price'
-          : 'of the reports due in daylight',
+            ? fleetFiguresPage.withoutPrice(worth.unpricedKWh)
+            : fleetFiguresPage.atEachDaysPrice
+          : fleetFiguresPage.ofTheReportsDue,
     },
   ];
 }
@@ -75,7 +76,7 @@ export function FleetFiguresPage({ f, finding, sentence, view: asked, defaults }
   const columns: Column<FleetFiguresRow>[] = [
     {
       key: 'site',
-      label: 'Site',
+      label: fleetFiguresPage.site,
       sortable: true,
       cell: (r) => (
         <a
@@ -88,29 +89,36 @@ export function FleetFiguresPage({ f, finding, sentence, view: asked, defaults }
     },
     {
       key: 'energy',
-      label: 'Energy',
+      label: fleetFiguresPage.energy,
       numeric: true,
       sortable: true,
       cell: (r) => energy(r.now.energyKWh * 1000),
     },
-    { key: 'change', label: 'Year before', numeric: true, sortable: true, from: 'sm', cell: change },
+    {
+      key: 'change',
+      label: fleetFiguresPage.yearBefore,
+      numeric: true,
+      sortable: true,
+      from: 'sm',
+      cell: change,
+    },
     {
       key: 'specific_yield',
-      label: 'kWh/kWp',
+      label: fleetFiguresPage.kWhKWp,
       numeric: true,
       sortable: true,
       cell: (r) => number(r.now.specificYieldKWhKWp, 1),
     },
     {
       key: 'ratio',
-      label: 'Ratio',
+      label: fleetFiguresPage.ratio,
       numeric: true,
       sortable: true,
       cell: (r) => number(r.now.performanceRatio, 3),
     },
     {
       key: 'ratio_stc',
-      label: 'At 25 °C',
+      label: fleetFiguresPage.at25C,
       numeric: true,
       sortable: true,
       from: 'md',
@@ -118,7 +126,7 @@ export function FleetFiguresPage({ f, finding, sentence, view: asked, defaults }
     },
     {
       key: 'availability',
-      label: 'Available',
+      label: fleetFiguresPage.available,
       numeric: true,
       sortable: true,
       from: 'md',
@@ -126,7 +134,7 @@ export function FleetFiguresPage({ f, finding, sentence, view: asked, defaults }
     },
     {
       key: 'completeness',
-      label: 'Data',
+      label: fleetFiguresPage.data,
       numeric: true,
       sortable: true,
       from: 'sm',
@@ -136,7 +144,7 @@ export function FleetFiguresPage({ f, finding, sentence, view: asked, defaults }
       ? [
           {
             key: 'worth',
-            label: 'Worth',
+            label: fleetFiguresPage.worth,
             numeric: true,
             sortable: true,
             from: 'lg' as const,
@@ -175,18 +183,23 @@ export function FleetFiguresPage({ f, finding, sentence, view: asked, defaults }
               <FigureSheet key={card.label} card={card} />
             ))}
           </div>
-          <Sheet id="sites" title="Sites" aside={`${rows.length} of ${f.rows.length}`} flush>
+          <Sheet
+            id="sites"
+            title={fleetFiguresPage.sites}
+            aside={fleetFiguresPage.rowsOfRows(rows.length, f.rows.length)}
+            flush
+          >
             <form className="no-print mb-3" onSubmit={(event) => event.preventDefault()}>
               <SearchInput
                 name="q"
-                label="Find a site by name or place"
-                placeholder="Site or place"
+                label={fleetFiguresPage.findASiteBy}
+                placeholder={fleetFiguresPage.siteOrPlace}
                 value={view.q}
                 onChange={(q) => setView({ q }, 'typed')}
               />
             </form>
             <Table
-              caption={`Figures of ${f.period.label} by site`}
+              caption={fleetFiguresPage.figuresOfBySite(f.period.label)}
               columns={columns}
               rows={rows}
               rowKey={(r) => r.site.id}
@@ -195,7 +208,7 @@ export function FleetFiguresPage({ f, finding, sentence, view: asked, defaults }
                 const sort = fleetFiguresSorts.find((k) => k === key);
                 if (sort) setView({ sort, order: descending ? 'down' : 'up' });
               }}
-              empty="No site is called that."
+              empty={fleetFiguresPage.noSiteIsCalled}
             />
           </Sheet>
           <YearOnYear months={f.months} year={Number(f.period.key.slice(0, 4))} today={f.today} />

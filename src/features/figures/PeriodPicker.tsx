@@ -1,6 +1,7 @@
 import { ButtonLink } from '../../components/ui/Button';
 import { periodOf, type Period } from '../../domain/output/period';
 import { withQuery } from '../../lib/api';
+import { periodPicker } from '../../words/figures';
 
 interface Props {
   path: string;
@@ -20,26 +21,26 @@ export function PeriodPicker({ path, period, today }: Props) {
         ? today.slice(0, 7)
         : `${period.key}-12`;
   return (
-    <nav aria-label="Period" className="no-print mb-5 flex flex-wrap items-center gap-2">
+    <nav aria-label={periodPicker.period} className="no-print mb-5 flex flex-wrap items-center gap-2">
       <ButtonLink
         href={to(period.previous)}
         rel="prev"
-        aria-label={`Before: ${periodOf(period.previous)?.label ?? ''}`}
+        aria-label={periodPicker.beforePrevious(periodOf(period.previous)?.label)}
       >
         ←
       </ButtonLink>
       <span className="min-w-[9.5rem] text-center font-semibold">{period.label}</span>
       {next && next.from <= today ? (
-        <ButtonLink href={to(period.next)} rel="next" aria-label={`After: ${next.label}`}>
+        <ButtonLink href={to(period.next)} rel="next" aria-label={periodPicker.afterNext(next.label)}>
           →
         </ButtonLink>
       ) : (
         <span className="w-[46px]" />
       )}
       <ButtonLink href={to(other)}>
-        {period.kind === 'month' ? `The year ${other}` : (periodOf(other)?.label ?? other)}
+        {period.kind === 'month' ? periodPicker.theYear(other) : (periodOf(other)?.label ?? other)}
       </ButtonLink>
-      {!today.startsWith(period.key) && <ButtonLink href={path}>This month</ButtonLink>}
+      {!today.startsWith(period.key) && <ButtonLink href={path}>{periodPicker.thisMonth}</ButtonLink>}
     </nav>
   );
 }

@@ -6,6 +6,7 @@ import { Sheet } from '../../components/ui/Sheet';
 import { ApiError, api } from '../../lib/api';
 import type { NewTariff, SiteFigures } from '../../schemas/api/figures';
 import { paths } from '../../schemas/paths';
+import { pricesSheet } from '../../words/figures';
 
 interface Props {
   site: string;
@@ -31,35 +32,37 @@ export function PricesSheet({ site, today, currency, prices, mayWrite }: Props) 
       window.location.reload();
     } catch (error) {
       setFault(
-        error instanceof ApiError ? error : new ApiError(0, 'Not sent', 'It did not work. Try again.'),
+        error instanceof ApiError ? error : new ApiError(0, pricesSheet.notSent, pricesSheet.itDidNotWork),
       );
       setBusy(false);
     }
   };
   return (
-    <Sheet id="prices" title="Price of a kWh" aside={currency ?? 'no currency set'} className="mt-5">
-      {currency === null && (
-        <p className="mb-3 text-ink-2">
-          A manager sets the currency in the settings; prices are kept until then and shown afterwards.
-        </p>
-      )}
+    <Sheet
+      id="prices"
+      title={pricesSheet.priceOfAKWh}
+      aside={currency ?? pricesSheet.noCurrencySet}
+      className="mt-5"
+    >
+      {currency === null && <p className="mb-3 text-ink-2">{pricesSheet.aManagerSetsThe}</p>}
       {prices.length === 0 ? (
-        <p className="text-ink-2">None is set, so energy is not priced.</p>
+        <p className="text-ink-2">{pricesSheet.noneIsSetSo}</p>
       ) : (
         <ul className="divide-y divide-rule-faint">
           {prices.map((p) => (
             <li key={p.id} className="flex flex-wrap items-center justify-between gap-x-4">
               <span className="min-h-[44px] py-2.5">
-                From {p.from}: <strong className="tabular-nums">{written(p.priceKWh)}</strong>{' '}
-                {currency ?? ''}, set by {p.by}
+                {pricesSheet.fromFrom(p.from)}
+                <strong className="tabular-nums">{written(p.priceKWh)}</strong>
+                {pricesSheet.setBy(currency, p.by)}
               </span>
               {mayWrite && (
                 <Button
                   disabled={busy}
-                  aria-label={`Take away the price from ${p.from}`}
+                  aria-label={pricesSheet.takeAwayThePrice(p.from)}
                   onClick={() => void run(() => api(paths.api.tariff(site, p.id), { method: 'DELETE' }))}
                 >
-                  Take away
+                  {pricesSheet.takeAway}
                 </Button>
               )}
             </li>
@@ -76,14 +79,14 @@ export function PricesSheet({ site, today, currency, prices, mayWrite }: Props) 
           }}
         >
           <Field
-            label="From"
+            label={pricesSheet.from}
             type="date"
             value={from}
             onChange={(event) => setFrom(event.target.value)}
             error={fault?.fault('from') ?? null}
           />
           <Field
-            label="Price"
+            label={pricesSheet.price}
             inputMode="decimal"
             placeholder="0.31"
             unit={currency ? `${currency}/kWh` : '/kWh'}
@@ -92,7 +95,7 @@ export function PricesSheet({ site, today, currency, prices, mayWrite }: Props) 
             error={fault?.fault('priceKWh') ?? null}
           />
           <Button type="submit" weight="primary" disabled={busy} className="sm:mt-7 sm:w-fit">
-            Set this price
+            {pricesSheet.setThisPrice}
           </Button>
         </form>
       )}

@@ -14,6 +14,7 @@ import { paths } from '../../schemas/paths';
 import { ImportedSheet } from './ImportedSheet';
 import { PeriodPicker } from './PeriodPicker';
 import { YearOnYear } from './YearOnYear';
+import { siteFiguresPage } from '../../words/figures';
 
 interface Props {
   f: SiteFigures;
@@ -35,7 +36,7 @@ export function SiteFiguresPage({ f, words }: Props) {
     <>
       <Heading
         crumbs={[
-          { label: 'Figures', href: withQuery(paths.figures(), { period: f.period.key }) },
+          { label: siteFiguresPage.figures, href: withQuery(paths.figures(), { period: f.period.key }) },
           { label: f.site.name, href: paths.site(f.site.id) },
           { label: f.period.label },
         ]}
@@ -46,11 +47,11 @@ export function SiteFiguresPage({ f, words }: Props) {
             <>
               {month && (
                 <ButtonLink href={withQuery(paths.api.siteReport(f.site.id), { month: f.period.key })}>
-                  Month report, PDF
+                  {siteFiguresPage.monthReportPDF}
                 </ButtonLink>
               )}
               <ButtonLink href={withQuery(paths.api.siteFiguresCsv(f.site.id), { period: f.period.key })}>
-                Days, CSV
+                {siteFiguresPage.daysCSV}
               </ButtonLink>
             </>
           )
@@ -66,41 +67,31 @@ export function SiteFiguresPage({ f, words }: Props) {
           </div>
           <Sheet
             id="losses"
-            title="Where the light went"
-            aside="estimates; quarters of an hour with light and power"
+            title={siteFiguresPage.whereTheLightWent}
+            aside={siteFiguresPage.estimatesQuartersOfAn}
           >
             {bars.length > 0 ? (
               <LossBars bars={bars} />
             ) : (
-              <p className="text-ink-2">
-                No sensor measured the light in the plane, so nothing can be said of what the plant could have
-                made.
-              </p>
+              <p className="text-ink-2">{siteFiguresPage.noSensorMeasuredThe}</p>
             )}
             <Losses f={f} />
           </Sheet>
-          <Sheet id="calendar" title="Day by day" aside="kWh/kWp; the deeper, the more of the best day">
+          <Sheet id="calendar" title={siteFiguresPage.dayByDay} aside={siteFiguresPage.kWhKWpTheDeeper}>
             {month ? (
-              <DayCalendar days={days} caption={`Days of ${f.period.label}`} />
+              <DayCalendar days={days} caption={siteFiguresPage.daysOf(f.period.label)} />
             ) : (
               <YearCalendar
                 days={days}
-                label={`Days of ${f.period.label}. ${ofDays}`}
+                label={siteFiguresPage.daysOf2(f.period.label, ofDays)}
                 monthLabel={monthName}
               />
             )}
-            <p className="mt-3 text-sm text-ink-2">
-              {ofDays} A rust edge marks a day with missing data or lost light.
-            </p>
+            <p className="mt-3 text-sm text-ink-2">{siteFiguresPage.rustEdgeMarksDay(ofDays)}</p>
           </Sheet>
           <YearOnYear months={f.months} year={Number(f.period.key.slice(0, 4))} today={f.today} />
           <DayTable f={f} />
-          <p className="max-w-[76ch] text-sm text-ink-2">
-            Yields and ratios follow IEC 61724-1. Each counts only quarters of an hour that have all it needs;
-            how much that was stands beside it. Light is what the sensor in the plane measures: strings in
-            other planes are measured by it too. Losses of causes are estimates and may overlap with dirt and
-            shade.
-          </p>
+          <p className="max-w-[76ch] text-sm text-ink-2">{siteFiguresPage.yieldsAndRatiosFollow}</p>
         </div>
       ) : (
         <Notice kind="empty" title={finding}>
@@ -125,8 +116,8 @@ function Losses({ f }: { f: SiteFigures }) {
             {l.headline}
           </a>
           <span className="tabular-nums text-ink-2">
-            {l.kWh > 0 ? `−${energy(l.kWh * 1000)}` : 'loss not known'}
-            {l.closedAt ? ', over' : ', still there'}
+            {l.kWh > 0 ? `−${energy(l.kWh * 1000)}` : siteFiguresPage.lossNotKnown}
+            {l.closedAt ? siteFiguresPage.over : siteFiguresPage.stillThere}
           </span>
         </li>
       ))}
@@ -136,57 +127,59 @@ function Losses({ f }: { f: SiteFigures }) {
 
 function DayTable({ f }: { f: SiteFigures }) {
   return (
-    <Sheet id="days" title="The days as a table" flush>
+    <Sheet id="days" title={siteFiguresPage.theDaysAsA} flush>
       <details>
-        <summary className="target cursor-pointer text-petrol">{number(f.days.length)} days</summary>
+        <summary className="target cursor-pointer text-petrol">
+          {siteFiguresPage.daysDays(f.days.length)}
+        </summary>
         <Table
-          caption={`Days of ${f.period.label}`}
+          caption={siteFiguresPage.daysOf(f.period.label)}
           rows={f.days}
           rowKey={(d) => d.day}
           columns={[
-            { key: 'day', label: 'Day', cell: (d) => d.day },
+            { key: 'day', label: siteFiguresPage.day, cell: (d) => d.day },
             {
               key: 'energy',
-              label: 'Energy',
+              label: siteFiguresPage.energy,
               numeric: true,
               cell: (d) => energy(d.figures.energyKWh * 1000),
             },
             {
               key: 'yield',
-              label: 'kWh/kWp',
+              label: siteFiguresPage.kWhKWp,
               numeric: true,
               cell: (d) => number(d.figures.specificYieldKWhKWp, 2),
             },
             {
               key: 'ratio',
-              label: 'Ratio',
+              label: siteFiguresPage.ratio,
               numeric: true,
               cell: (d) => number(d.figures.performanceRatio, 3),
             },
             {
               key: 'stc',
-              label: 'At 25 °C',
+              label: siteFiguresPage.at25C,
               numeric: true,
               from: 'md',
               cell: (d) => number(d.figures.performanceRatioStc, 3),
             },
             {
               key: 'light',
-              label: 'kWh/m²',
+              label: siteFiguresPage.kWhM,
               numeric: true,
               from: 'sm',
               cell: (d) => number(d.figures.insolationKWhM2, 2),
             },
             {
               key: 'lost',
-              label: 'Lost',
+              label: siteFiguresPage.lost,
               numeric: true,
               from: 'md',
               cell: (d) => quantity(d.figures.lostMinutes, 'min'),
             },
             {
               key: 'data',
-              label: 'Data',
+              label: siteFiguresPage.data,
               numeric: true,
               from: 'sm',
               cell: (d) => percent(d.figures.completeness),

@@ -3,6 +3,7 @@ import { Table } from '../../components/ui/Table';
 import { monthName } from '../../domain/output/period';
 import { energy, number, percent } from '../../drawings/numbers';
 import { YearBars } from '../../drawings/YearBars';
+import { yearOnYear } from '../../words/figures';
 
 interface Month {
   year: number;
@@ -35,16 +36,12 @@ export function YearOnYear({
     null,
   );
   return (
-    <Sheet
-      id="years"
-      title={`${year} beside ${year - 1}`}
-      aside={`filled ${year}, outline ${year - 1}`}
-      flush
-    >
+    <Sheet id="years" title={yearOnYear.yearBesideYear(year)} aside={yearOnYear.filledOutline(year)} flush>
       <YearBars
-        label={`Energy month by month, ${year} beside ${year - 1}.${
-          best?.now ? ` Most in ${monthName(best.month)}: ${energy(best.now.energyKWh * 1000)}.` : ''
-        }`}
+        label={yearOnYear.energyMonthByMonth(
+          year,
+          best?.now ? ` Most in ${monthName(best.month)}: ${energy(best.now.energyKWh * 1000)}.` : '',
+        )}
         monthLabel={monthName}
         months={rows.map((r) => ({
           month: r.month,
@@ -53,13 +50,13 @@ export function YearOnYear({
         }))}
       />
       <details className="mt-3">
-        <summary className="target cursor-pointer text-petrol">As a table</summary>
+        <summary className="target cursor-pointer text-petrol">{yearOnYear.asATable}</summary>
         <Table
-          caption={`Energy by month, ${year} and ${year - 1}`}
+          caption={yearOnYear.energyByMonthAnd(year)}
           rows={rows}
           rowKey={(r) => String(r.month)}
           columns={[
-            { key: 'month', label: 'Month', cell: (r) => monthName(r.month) },
+            { key: 'month', label: yearOnYear.month, cell: (r) => monthName(r.month) },
             {
               key: 'now',
               label: String(year),
@@ -74,7 +71,7 @@ export function YearOnYear({
             },
             {
               key: 'change',
-              label: 'Change',
+              label: yearOnYear.change,
               numeric: true,
               cell: (r) =>
                 r.now && r.before && r.before.energyKWh > 0 && !running(r.month)
@@ -85,7 +82,7 @@ export function YearOnYear({
               ? [
                   {
                     key: 'ratio',
-                    label: 'Ratio',
+                    label: yearOnYear.ratio,
                     numeric: true,
                     cell: (r: (typeof rows)[number]) => number(r.now?.performanceRatio, 3),
                   },

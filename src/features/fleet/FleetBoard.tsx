@@ -20,6 +20,7 @@ import { fleetFinding } from './finding';
 import { fleetLines } from './list';
 import { changedFleet, fleetKey, fleetQuery, withAcknowledgement } from './query';
 import { FLEET_DEFAULTS, sortInWords } from './view';
+import { fleetBoard } from '../../words/fleet';
 
 interface Props {
   initial: FleetNow;
@@ -56,12 +57,12 @@ export function FleetBoard({ initial, view: initialView, missed, timeZone }: Pro
       <LiveHeading finding={finding} status={status} timeZone={readerZone} />
       <NotRead
         error={error}
-        title="The fleet could not be read anew"
+        title={fleetBoard.theFleetCouldNot}
         kind="failed"
         onRetry={() => refetch()}
         className="mb-6"
       >
-        What is shown may be old.
+        {fleetBoard.whatIsShownMay}
       </NotRead>
       {missed && missed.items.length > 0 && (
         <SinceLastLook missed={missed} now={initial.at} timeZone={readerZone} />
@@ -69,7 +70,7 @@ export function FleetBoard({ initial, view: initialView, missed, timeZone }: Pro
       {causes.length > 0 && (
         <section aria-labelledby="causes" className="mb-8">
           <h2 id="causes" className="mb-2.5 text-[15px] leading-5 tracking-[-0.01em]">
-            Causes to act on
+            {fleetBoard.causesToActOn}
           </h2>
           <div className="grid items-stretch gap-4 md:grid-cols-2 xl:grid-cols-3">
             {causes.map((cause) => (
@@ -87,17 +88,17 @@ export function FleetBoard({ initial, view: initialView, missed, timeZone }: Pro
         </section>
       )}
       {fleet.sites.length === 0 ? (
-        <Notice kind="empty" title="No site yet">
-          A manager enters the first plant; its units, strings and states then stand here.
+        <Notice kind="empty" title={fleetBoard.noSiteYet}>
+          {fleetBoard.aManagerEntersThe}
         </Notice>
       ) : (
         <section aria-labelledby="sites">
           <div className="mb-2.5 flex flex-wrap items-baseline justify-between gap-x-4">
             <h2 id="sites" className="text-[15px] leading-5 tracking-[-0.01em]">
-              Sites
+              {fleetBoard.sites}
             </h2>
             <p className="text-sm text-ink-2" role="status">
-              {sortInWords(view)} · {number(lines.length)} of {number(fleet.sites.length)}
+              {fleetBoard.viewLinesOfSites(sortInWords(view), lines.length, fleet.sites.length)}
             </p>
           </div>
           <Sheet flush>

@@ -5,6 +5,7 @@ import { withQuery } from '../../lib/api';
 import type { FleetView } from '../../schemas/api/fleet';
 import { paths } from '../../schemas/paths';
 import { SHOWS, STAGES } from './view';
+import { fleetFilters } from '../../words/fleet';
 
 interface Props {
   view: FleetView;
@@ -21,19 +22,19 @@ export function FleetFilters({ view, onChange }: Props) {
     >
       <SearchInput
         name="q"
-        label="Filter sites by name or place"
-        placeholder="Filter by name or place"
+        label={fleetFilters.filterSitesByName}
+        placeholder={fleetFilters.filterByNameOr}
         value={view.q}
         onChange={(typed) => onChange({ q: typed }, 'typed')}
       />
       <Segmented
-        label="Which sites"
+        label={fleetFilters.whichSites}
         options={SHOWS}
         value={view.show}
         onChange={(show) => onChange({ show })}
       />
       <Segmented
-        label="Stage"
+        label={fleetFilters.stage}
         options={STAGES}
         value={view.stage}
         onChange={(stage) => onChange({ stage })}

@@ -9,8 +9,9 @@ import { paths } from '../../schemas/paths';
 import type { FleetLine } from './list';
 import { openAt } from './need';
 import { readsFromA } from './view';
+import { fleetTable } from '../../words/fleet';
 
-const STAGE = { commissioning: 'Commissioning', operating: 'Operating' } as const;
+const STAGE = { commissioning: fleetTable.commissioning, operating: fleetTable.operating } as const;
 
 function Open({ line, now }: { line: FleetLine; now: Date }) {
   const words = openAt(line.site, line.causes, now, useReaderZone());
@@ -20,7 +21,7 @@ function Open({ line, now }: { line: FleetLine; now: Date }) {
 const columns = (now: Date): Column<FleetLine>[] => [
   {
     key: 'name',
-    label: 'Site',
+    label: fleetTable.site,
     sortable: true,
     cell: (line) => (
       <>
@@ -33,7 +34,7 @@ const columns = (now: Date): Column<FleetLine>[] => [
         <div className="mt-0.5 space-y-1.5 sm:hidden">
           <MixBar id={`narrow-${line.site.id}`} counts={line.site.counts} width={190} />
           <p className="text-sm text-ink-2">
-            {STAGE[line.site.stage]}, {number(line.site.counts.units)} units
+            {fleetTable.stageUnitsUnits(STAGE[line.site.stage], line.site.counts.units)}
           </p>
           <p className="text-sm">
             <Open line={line} now={now} />
@@ -44,14 +45,14 @@ const columns = (now: Date): Column<FleetLine>[] => [
   },
   {
     key: 'stage',
-    label: 'Stage',
+    label: fleetTable.stage,
     sortable: true,
     from: 'lg',
     cell: (line) => <span className="text-ink-2">{STAGE[line.site.stage]}</span>,
   },
   {
     key: 'units',
-    label: 'Units',
+    label: fleetTable.units,
     sortable: true,
     from: 'sm',
     cell: (line) => (
@@ -61,10 +62,16 @@ const columns = (now: Date): Column<FleetLine>[] => [
       </div>
     ),
   },
-  { key: 'need', label: 'Open', sortable: true, from: 'sm', cell: (line) => <Open line={line} now={now} /> },
+  {
+    key: 'need',
+    label: fleetTable.open,
+    sortable: true,
+    from: 'sm',
+    cell: (line) => <Open line={line} now={now} />,
+  },
   {
     key: 'ratio',
-    label: 'Performance ratio, 30 d',
+    label: fleetTable.performanceRatio30D,
     numeric: true,
     sortable: true,
     from: 'md',
@@ -72,7 +79,7 @@ const columns = (now: Date): Column<FleetLine>[] => [
   },
   {
     key: 'power',
-    label: 'Now',
+    label: fleetTable.now,
     numeric: true,
     sortable: true,
     className: 'max-sm:align-top max-sm:pt-[18px]',
@@ -92,7 +99,7 @@ export function FleetTable({ lines, view, now, onChange, onClear }: Props) {
   const ascending = readsFromA(view.sort) ? view.order === 'down' : view.order === 'up';
   return (
     <Table
-      caption="Sites with their units by state, what is open, performance ratio and power now"
+      caption={fleetTable.sitesWithTheirUnits}
       columns={columns(now)}
       rows={lines}
       rowKey={(line) => line.site.id}
@@ -105,10 +112,10 @@ export function FleetTable({ lines, view, now, onChange, onClear }: Props) {
         <div className="py-3">
           <Notice
             kind="empty"
-            title="No site matches"
-            action={<Button onClick={onClear}>Show all sites</Button>}
+            title={fleetTable.noSiteMatches}
+            action={<Button onClick={onClear}>{fleetTable.showAllSites}</Button>}
           >
-            Another word, stage or filter may.
+            {fleetTable.anotherWordStageOr}
           </Notice>
         </div>
       }

@@ -6,6 +6,7 @@ import type { SinceLastLook as Missed } from '../../schemas/api/fleet';
 import { paths } from '../../schemas/paths';
 import { missedInWords } from './missed';
 import { SEEN_COOKIE } from './seen';
+import { sinceLastLook } from '../../words/fleet';
 
 /** For whoever comes back: what happened meanwhile, the gravest first, until they have said that they saw it. */
 export function SinceLastLook({ missed, now, timeZone }: { missed: Missed; now: string; timeZone: string }) {
@@ -18,7 +19,7 @@ export function SinceLastLook({ missed, now, timeZone }: { missed: Missed; now: 
       className="mb-6"
       title={
         <>
-          Since you last looked,{' '}
+          {sinceLastLook.sinceYouLastLooked}
           <time dateTime={missed.since} title={fullTime(missed.since, timeZone)} className="font-medium">
             {siteClock(missed.since, now, timeZone, readerZone)}
           </time>
@@ -29,11 +30,11 @@ export function SinceLastLook({ missed, now, timeZone }: { missed: Missed; now: 
           type="button"
           className="target -my-2 px-1 font-medium text-petrol hover:underline"
           onClick={() => {
-            document.cookie = `${SEEN_COOKIE}=${encodeURIComponent(missed.since)}; path=/; max-age=2592000; samesite=lax`;
+            document.cookie = sinceLastLook.pathMaxAgeSamesite(SEEN_COOKIE, encodeURIComponent(missed.since));
             setSeen(true);
           }}
         >
-          Seen
+          {sinceLastLook.seen}
         </button>
       }
     >
@@ -41,7 +42,7 @@ export function SinceLastLook({ missed, now, timeZone }: { missed: Missed; now: 
         {missed.items.map((item) => (
           <li key={`${item.siteId} ${item.kind}`} className="flex justify-between gap-3">
             <span className="min-w-0">
-              {missedInWords(item)} at{' '}
+              {sinceLastLook.itemAt(missedInWords(item))}
               <a href={paths.site(item.siteId)} className="link">
                 {item.siteName}
               </a>
@@ -57,7 +58,7 @@ export function SinceLastLook({ missed, now, timeZone }: { missed: Missed; now: 
         ))}
       </ul>
       {missed.more > 0 && (
-        <p className="mt-2 text-sm text-ink-2">and {missed.more} more; each site tells its own.</p>
+        <p className="mt-2 text-sm text-ink-2">{sinceLastLook.andMoreEachSite(missed.more)}</p>
       )}
     </Sheet>
   );

@@ -1,7 +1,8 @@
 import { countInside, headingOf, WHAT_TO_DO } from '../../components/causes/finding';
 import { GRAVITY } from '../../components/causes/words';
-import { countAtStart, listed, number } from '../../drawings/numbers';
+import { listed, number } from '../../drawings/numbers';
 import type { CauseNow, SiteNow } from '../../schemas/api/now';
+import { fleetFindingWords } from '../../words/fleet';
 
 export interface Finding {
   heading: string;
@@ -28,36 +29,39 @@ function standing(sites: readonly SiteNow[], told: CauseNow['verdict'] | null): 
   );
   const parts = [
     passing === all && all > 0
-      ? `all ${number(all)} units pass`
-      : `${number(passing)} of ${number(all)} units pass`,
+      ? fleetFindingWords.allUnitsPass(all)
+      : fleetFindingWords.ofUnitsPass(passing, all),
   ];
   if (stuck > 0)
     parts.push(
-      `${number(stuck)} ${stuck === 1 ? 'is' : 'are'} stuck in shutdown at ${
-        stuckAt.length === 1 ? stuckAt[0]?.name : `${countInside(stuckAt.length)} sites`
-      }`,
+      fleetFindingWords.stuckStuckStuckIn(
+        stuck,
+        stuckAt.length,
+        stuckAt[0]?.name,
+        countInside(stuckAt.length),
+      ),
     );
-  if (unconfirmed > 0) parts.push(`${number(unconfirmed)} can't be confirmed`);
-  if (silent > 0) parts.push(`${number(silent)} ${silent === 1 ? 'is' : 'are'} silent`);
-  if (unheard > 0) parts.push(`${number(unheard)} unheard`);
-  if (dark > 0) parts.push(`${number(dark)} in the dark`);
-  if (mute > 0) parts.push(`${number(mute)} ${mute === 1 ? 'tells' : 'tell'} nothing themselves`);
+  if (unconfirmed > 0) parts.push(fleetFindingWords.cantBeConfirmed(unconfirmed));
+  if (silent > 0) parts.push(fleetFindingWords.silentSilentSilent(silent));
+  if (unheard > 0) parts.push(fleetFindingWords.unheardUnheard(unheard));
+  if (dark > 0) parts.push(fleetFindingWords.inTheDark(dark));
+  if (mute > 0) parts.push(fleetFindingWords.nothingThemselves(mute));
   const held = sites.filter((s) => s.inShutdownSince !== null);
   if (held.length > 0 && held.length <= 2)
-    parts.push(
-      `${listed(held.map((s) => s.name))} ${held.length === 1 ? 'is' : 'are'} in shutdown on purpose`,
-    );
-  else if (held.length > 2) parts.push(`${countInside(held.length)} sites are in shutdown on purpose`);
+    parts.push(fleetFindingWords.inShutdownOnPurpose(listed(held.map((s) => s.name)), held.length));
+  else if (held.length > 2) parts.push(fleetFindingWords.sitesAreInShutdown(countInside(held.length)));
   const last = parts.pop() ?? '';
-  return parts.length === 0 ? last : `${parts.join(', ')}${parts.length > 1 ? ', and ' : ' and '}${last}`;
+  return parts.length === 0
+    ? last
+    : `${parts.join(', ')}${parts.length > 1 ? fleetFindingWords.and : ' and '}${last}`;
 }
 
 /** The fleet's finding: the gravest thing that holds, as a heading, and one sentence on what follows. */
 export function fleetFinding(sites: readonly SiteNow[], causes: readonly CauseNow[]): Finding {
   if (sites.length === 0)
     return {
-      heading: 'No site is set up yet',
-      sentence: 'Sites appear here as soon as their plant is entered.',
+      heading: fleetFindingWords.noSiteIsSet,
+      sentence: fleetFindingWords.sitesAppearHereAs,
     };
   const worst = GRAVITY.find((verdict) => causes.some((c) => c.verdict === verdict));
   const away = sites.filter((s) => !s.loggerConnected);
@@ -65,20 +69,25 @@ export function fleetFinding(sites: readonly SiteNow[], causes: readonly CauseNo
     const ofIt = causes.filter((c) => c.verdict === worst);
     const names = new Set(ofIt.map((c) => c.siteName));
     const there =
-      names.size === 1 ? 'there' : `at ${listed([...names].slice(0, 3))}${names.size > 3 ? ' and more' : ''}`;
+      names.size === 1
+        ? 'there'
+        : fleetFindingWords.atListedSaidNames(listed([...names].slice(0, 3)), names.size);
     return {
       heading: headingOf(worst, ofIt),
-      sentence: `${WHAT_TO_DO[worst](there)} Elsewhere ${standing(sites, worst)}.`,
+      sentence: fleetFindingWords.thereElsewhereSites(WHAT_TO_DO[worst](there), standing(sites, worst)),
     };
   }
   if (away.length > 0)
     return {
       heading:
         away.length === 1
-          ? `${away[0]?.name} does not report`
-          : `${countAtStart(away.length)} of ${number(sites.length)} sites do not report`,
-      sentence: `Nothing newer is known of ${away.length === 1 ? 'it' : 'them'}. By the last reports ${standing(sites, null)}.`,
+          ? fleetFindingWords.doesNotReport(away[0]?.name)
+          : fleetFindingWords.ofSitesDoNot(away.length, sites.length),
+      sentence: fleetFindingWords.nothingNewerIsKnown(away.length, standing(sites, null)),
     };
   const text = standing(sites, null);
-  return { heading: 'Nothing needs attention', sentence: `${text.charAt(0).toUpperCase()}${text.slice(1)}.` };
+  return {
+    heading: fleetFindingWords.nothingNeedsAttention,
+    sentence: `${text.charAt(0).toUpperCase()}${text.slice(1)}.`,
+  };
 }

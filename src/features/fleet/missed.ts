@@ -1,10 +1,10 @@
 import { countAtStart } from '../../drawings/numbers';
 import type { MissedItem } from '../../schemas/api/fleet';
+import { fleetMissed } from '../../words/fleet';
 
 const some = (n: number, one: string, many = `${one}s`): string =>
   `${countAtStart(n)} ${n === 1 ? one : many}`;
-const times = (n: number): string =>
-  n === 1 ? '' : n === 2 ? ', twice' : `, ${countAtStart(n).toLowerCase()} times`;
+const times = (n: number): string => (n === 1 ? '' : n === 2 ? fleetMissed.twice : fleetMissed.nTimes(n));
 
 /** What happened at a site while somebody was away, as half a sentence before "at Kestrel Row School". */
 export function missedInWords({ kind, events, units }: MissedItem): string {
@@ -12,32 +12,32 @@ export function missedInWords({ kind, events, units }: MissedItem): string {
   const n = Math.max(units, 1);
   switch (kind) {
     case 'units_not_shutting_down':
-      return `${some(n, 'unit')} did not shut down`;
+      return fleetMissed.didNotShutDown(some(n, 'unit'));
     case 'units_stuck':
-      return `${some(n, 'unit')} got stuck in shutdown`;
+      return fleetMissed.gotStuckInShutdown(some(n, 'unit'));
     case 'units_unconfirmed':
-      return `The shutdown of ${some(n, 'unit').toLowerCase()} could not be confirmed`;
+      return fleetMissed.theShutdownOfCould(some(n, 'unit'));
     case 'units_silent':
-      return `${some(n, 'unit')} fell silent`;
+      return fleetMissed.fellSilent(some(n, 'unit'));
     case 'units_recovered':
-      return `${some(n, 'unit')} recovered`;
+      return fleetMissed.nRecovered(some(n, 'unit'));
     case 'string_finding':
-      return `${some(events, 'string finding')} began`;
+      return fleetMissed.eventsBegan(some(events, 'string finding'));
     case 'string_finding_ended':
-      return `${some(events, 'string finding')} ended`;
+      return fleetMissed.eventsEnded(some(events, 'string finding'));
     case 'logger_lost':
-      return `The logger stopped reporting${times(events)}`;
+      return fleetMissed.theLoggerStoppedReporting(times(events));
     case 'gateway_silent':
-      return `A gateway fell silent${times(events)}`;
+      return fleetMissed.gatewayFellSilent(times(events));
     case 'command':
-      return events === 1 ? 'A command came in force' : `${countAtStart(events)} commands came in force`;
+      return events === 1 ? fleetMissed.aCommandCameIn : fleetMissed.commandsCameInForce(events);
     case 'roll_call_started':
-      return `A roll call was started${times(events)}`;
+      return fleetMissed.rollCallWasStarted(times(events));
     case 'roll_call_stopped':
-      return `A roll call was stopped${times(events)}`;
+      return fleetMissed.rollCallWasStopped(times(events));
     case 'hazard_acknowledged':
-      return `${some(events, 'hazard was', 'hazards were')} taken on`;
+      return fleetMissed.takenOn(some(events, 'hazard was', 'hazards were'));
     default:
-      return `${some(events, 'event')} came in`;
+      return fleetMissed.cameIn(some(events, 'event'));
   }
 }

@@ -2,6 +2,7 @@ import { concerned } from '../../components/causes/places';
 import { number } from '../../drawings/numbers';
 import { siteClock } from '../../components/ui/reader-zone';
 import type { CauseNow, SiteNow } from '../../schemas/api/now';
+import { fleetNeed } from '../../words/fleet';
 
 /** What of a site asks for somebody, gravest first; what is lower in this list is worse. */
 export type Need =
@@ -66,7 +67,7 @@ function behind(causes: readonly CauseNow[], verdict: CauseNow['verdict'], units
   const ofIt = causes.filter((c) => c.verdict === verdict);
   if (ofIt.length !== 1 || units < 2) return '';
   const part = ofIt[0]?.sharedPart;
-  return part && part.kind !== 'unit' ? `, one ${part.kind}` : ', one cause';
+  return part && part.kind !== 'unit' ? fleetNeed.oneKind(part.kind) : fleetNeed.oneCause;
 }
 
 /**
@@ -83,26 +84,25 @@ export function openAt(
   const parts: string[] = [];
   const stringsLive = stringLevel(causes, 'not_shutting_down');
   const stringsStuck = stringLevel(causes, 'stuck');
-  if (counts.notShuttingDown > 0) parts.push(`${number(counts.notShuttingDown)} did not shut down`);
-  if (stringsLive > 0)
-    parts.push(`${stringsLive === 1 ? '1 string' : `${number(stringsLive)} strings`} did not shut down`);
-  if (counts.stuck > 0) parts.push(`${number(counts.stuck)} stuck${behind(causes, 'stuck', counts.stuck)}`);
-  if (stringsStuck > 0)
-    parts.push(`${stringsStuck === 1 ? '1 string has' : `${number(stringsStuck)} strings have`} stuck units`);
-  if (counts.unconfirmed > 0) parts.push(`${number(counts.unconfirmed)} unconfirmed`);
+  if (counts.notShuttingDown > 0) parts.push(fleetNeed.didNotShutDown(counts.notShuttingDown));
+  if (stringsLive > 0) parts.push(fleetNeed.stringsLive11String(stringsLive));
+  if (counts.stuck > 0)
+    parts.push(fleetNeed.stuckStuckCauses(counts.stuck, behind(causes, 'stuck', counts.stuck)));
+  if (stringsStuck > 0) parts.push(fleetNeed.stringsStuck11String(stringsStuck));
+  if (counts.unconfirmed > 0) parts.push(fleetNeed.unconfirmedUnconfirmed(counts.unconfirmed));
   if (counts.silent > 0)
-    parts.push(`${number(counts.silent)} silent${behind(causes, 'silent', counts.silent)}`);
-  if (counts.unheard > 0) parts.push(`${number(counts.unheard)} unheard`);
+    parts.push(fleetNeed.silentSilentCauses(counts.silent, behind(causes, 'silent', counts.silent)));
+  if (counts.unheard > 0) parts.push(fleetNeed.unheardUnheard(counts.unheard));
   if (!site.loggerConnected)
     parts.push(
       site.reportedAt
-        ? `no report since ${siteClock(site.reportedAt, now, site.timeZone, readerZone)}`
-        : 'has not reported yet',
+        ? fleetNeed.noReportSince(siteClock(site.reportedAt, now, site.timeZone, readerZone))
+        : fleetNeed.hasNotReportedYet,
     );
   if (site.inShutdownSince)
-    parts.push(`in shutdown since ${siteClock(site.inShutdownSince, now, site.timeZone, readerZone)}`);
+    parts.push(fleetNeed.inShutdownSince(siteClock(site.inShutdownSince, now, site.timeZone, readerZone)));
   else
     for (const where of [...new Set(site.commands.map((c) => c.where))].slice(0, 2))
-      parts.push(`${where} in shutdown`);
+      parts.push(fleetNeed.inShutdown(where));
   return parts.length > 0 ? parts.join(' · ') : 'nothing';
 }

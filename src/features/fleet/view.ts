@@ -1,26 +1,27 @@
 import type { FleetView } from '../../schemas/api/fleet';
+import { fleetView } from '../../words/fleet';
 
 export const FLEET_DEFAULTS: FleetView = { q: '', stage: 'any', show: 'all', sort: 'need', order: 'down' };
 
 export const STAGES = [
-  { value: 'any', label: 'All stages' },
-  { value: 'commissioning', label: 'Commissioning' },
-  { value: 'operating', label: 'Operating' },
+  { value: 'any', label: fleetView.allStages },
+  { value: 'commissioning', label: fleetView.commissioning },
+  { value: 'operating', label: fleetView.operating },
 ] as const;
 
 export const SHOWS = [
-  { value: 'all', label: 'All sites' },
-  { value: 'attention', label: 'Needs attention' },
-  { value: 'shutdown', label: 'In shutdown' },
+  { value: 'all', label: fleetView.allSites },
+  { value: 'attention', label: fleetView.needsAttention },
+  { value: 'shutdown', label: fleetView.inShutdown },
 ] as const;
 
 const SORT_WORDS: Record<FleetView['sort'], readonly [down: string, up: string]> = {
-  need: ['Needs attention first', 'Needs attention last'],
-  name: ['By name', 'By name, from the end'],
-  stage: ['Commissioning first', 'Operating first'],
-  units: ['Most units first', 'Fewest units first'],
-  ratio: ['Highest performance ratio first', 'Lowest performance ratio first'],
-  power: ['Most power first', 'Least power first'],
+  need: [fleetView.needsAttentionFirst, fleetView.needsAttentionLast],
+  name: [fleetView.byName, fleetView.byNameFromThe],
+  stage: [fleetView.commissioningFirst, fleetView.operatingFirst],
+  units: [fleetView.mostUnitsFirst, fleetView.fewestUnitsFirst],
+  ratio: [fleetView.highestPerformanceRatioFirst, fleetView.lowestPerformanceRatioFirst],
+  power: [fleetView.mostPowerFirst, fleetView.leastPowerFirst],
 };
 export const sortInWords = (view: FleetView): string => SORT_WORDS[view.sort][view.order === 'down' ? 0 : 1];
 

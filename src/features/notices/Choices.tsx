@@ -7,7 +7,6 @@ import { Heading } from '../../components/ui/Heading';
 import { Notice } from '../../components/ui/Notice';
 import { Sheet } from '../../components/ui/Sheet';
 import { HOWS, type How, type NoticeKind } from '../../domain/notices/kinds';
-import { counted } from '../../drawings/numbers';
 import { api, type ApiError } from '../../lib/api';
 import { queryClient } from '../../lib/query-client';
 import type { ChoiceBody, ChoicesPage } from '../../schemas/api/notices';
@@ -15,6 +14,7 @@ import { paths } from '../../schemas/paths';
 import { KindRows } from './KindRows';
 import { SiteChoice } from './SiteChoice';
 import { clockOfMinute, minuteOfClock } from './words';
+import { choices } from '../../words/notices';
 
 interface Draft {
   rules: Partial<Record<NoticeKind, How>>;
@@ -37,7 +37,7 @@ const draftOf = (page: ChoicesPage): Draft => ({
   timeZone: page.timeZone ?? OWN_ORGANISATION,
 });
 
-const NO_TIME = 'Give a time of day, as 07:30.';
+const NO_TIME = choices.giveATimeOf;
 
 function bodyOf(draft: Draft): { body: ChoiceBody } | { faults: Record<string, string> } {
   const digestAt = minuteOfClock(draft.digestAt);
@@ -64,10 +64,10 @@ function findingOf(page: ChoicesPage): string {
   const count = (how: How) => page.kinds.filter((k) => k.how === how).length;
   const atOnce = count('at_once');
   const digest = count('digest');
-  if (atOnce + digest === 0) return 'You get no letters; what happens is shown here';
+  if (atOnce + digest === 0) return choices.youGetNoLetters;
   const parts = [
-    ...(atOnce > 0 ? [`${counted(atOnce, 'kind')} of notice by letter at once`] : []),
-    ...(digest > 0 ? [`${digest} in the day’s letter`] : []),
+    ...(atOnce > 0 ? [choices.ofNoticeByLetter(atOnce)] : []),
+    ...(digest > 0 ? [choices.inTheDaysLetter(digest)] : []),
   ];
   return parts.join(', ');
 }
@@ -106,12 +106,12 @@ export function Choices({ initial }: { initial: ChoicesPage }) {
       }}
     >
       <Heading
-        crumbs={[{ label: 'Your account', href: paths.account() }, { label: 'What you are told of' }]}
+        crumbs={[{ label: choices.yourAccount, href: paths.account() }, { label: choices.whatYouAreTold }]}
         finding={findingOf(page)}
-        sentence={`Letters go to ${page.email}. Whatever is not switched off is also shown under Notices.`}
+        sentence={choices.lettersGoToWhatever(page.email)}
       />
       <div role="status" className="mb-4 empty:hidden">
-        {saving.isSuccess && <Notice kind="done" title="What you are told of is kept as you chose it." />}
+        {saving.isSuccess && <Notice kind="done" title={choices.whatYouAreToldOf} />}
       </div>
       {saving.error && (
         <div className="mb-4">
@@ -119,7 +119,7 @@ export function Choices({ initial }: { initial: ChoicesPage }) {
         </div>
       )}
       <div className="grid gap-5 lg:grid-cols-[minmax(0,3fr)_minmax(0,2fr)]">
-        <Sheet id="kinds" title="Kinds">
+        <Sheet id="kinds" title={choices.kinds}>
           <KindRows
             kinds={page.kinds}
             rules={draft.rules}
@@ -127,18 +127,14 @@ export function Choices({ initial }: { initial: ChoicesPage }) {
           />
         </Sheet>
         <div className="grid content-start gap-5">
-          <Sheet id="hours" title="Hours">
+          <Sheet id="hours" title={choices.hours}>
             <div className="grid gap-4">
               <Field
-                label="The day’s letter at"
+                label={choices.theDaysLetterAt}
                 type="time"
                 value={draft.digestAt}
                 error={fault('digestAt')}
-                hint={
-                  daily
-                    ? 'On days on which there is something to tell.'
-                    : 'Nothing goes into it as you have chosen.'
-                }
+                hint={daily ? choices.onDaysOnWhich : choices.nothingGoesIntoIt}
                 onChange={(event) => change({ digestAt: event.target.value })}
               />
               <label className="flex min-h-[44px] items-center gap-2">
@@ -149,20 +145,20 @@ export function Choices({ initial }: { initial: ChoicesPage }) {
                   className="h-5 w-5 accent-petrol"
                 />
                 {page.kinds.some((k) => k.fixed !== null)
-                  ? 'Quiet hours: no letters, but hazards'
-                  : 'Quiet hours: no letters'}
+                  ? choices.quietHoursNoLetters
+                  : choices.quietHoursNoLetters2}
               </label>
               {draft.quiet && (
                 <div className="grid grid-cols-2 gap-3">
                   <Field
-                    label="From"
+                    label={choices.from}
                     type="time"
                     value={draft.quietFrom}
                     error={fault('quietFrom') ?? fault('quiet')}
                     onChange={(event) => change({ quietFrom: event.target.value })}
                   />
                   <Field
-                    label="To"
+                    label={choices.to}
                     type="time"
                     value={draft.quietTo}
                     error={fault('quietTo')}
@@ -171,13 +167,13 @@ export function Choices({ initial }: { initial: ChoicesPage }) {
                 </div>
               )}
               <Choice
-                label="Your time zone"
+                label={choices.yourTimeZone}
                 value={draft.timeZone}
                 error={fault('timeZone')}
                 options={[
                   {
                     value: OWN_ORGANISATION,
-                    label: `As the organisation, ${page.organisationZone.replaceAll('_', ' ')}`,
+                    label: choices.asTheOrganisation(page.organisationZone.replaceAll('_', ' ')),
                   },
                   ...page.timeZones.map((zone) => ({ value: zone, label: zone.replaceAll('_', ' ') })),
                 ]}
@@ -186,7 +182,7 @@ export function Choices({ initial }: { initial: ChoicesPage }) {
             </div>
           </Sheet>
           {page.sites.length > 1 && (
-            <Sheet id="sites" title="Sites">
+            <Sheet id="sites" title={choices.sites}>
               <SiteChoice
                 sites={page.sites}
                 chosen={draft.sites}
@@ -200,7 +196,7 @@ export function Choices({ initial }: { initial: ChoicesPage }) {
       </div>
       <div className="mt-5">
         <Button type="submit" weight="primary" disabled={saving.isPending}>
-          Save what you are told of
+          {choices.saveWhatYouAre}
         </Button>
       </div>
     </form>

@@ -2,6 +2,7 @@ import { Choice } from '../../components/ui/Choice';
 import { HOWS, type How, type NoticeKind } from '../../domain/notices/kinds';
 import type { ChoicesPage } from '../../schemas/api/notices';
 import { HOW_WORDS } from './words';
+import { kindRows } from '../../words/notices';
 
 interface Props {
   kinds: ChoicesPage['kinds'];
@@ -25,11 +26,11 @@ export function KindRows({ kinds, rules, onChange }: Props) {
           ) : (
             <Choice
               quiet
-              label={`How you are told: ${name}`}
+              label={kindRows.howYouAreTold(name)}
               value={rules[kind] ?? standard}
               options={HOWS.map((how) => ({
                 value: how,
-                label: how === standard ? `${HOW_WORDS[how]} (usual)` : HOW_WORDS[how],
+                label: how === standard ? kindRows.howUsual(HOW_WORDS[how]) : HOW_WORDS[how],
               }))}
               onChange={(value) => {
                 const how = HOWS.find((h) => h === value);

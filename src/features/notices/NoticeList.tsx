@@ -4,6 +4,7 @@ import { Tag } from '../../components/ui/Tag';
 import { SiteTime } from '../../components/ui/Time';
 import { KINDS } from '../../domain/notices/kinds';
 import type { NoticeItem } from '../../schemas/api/notices';
+import { noticeList } from '../../words/notices';
 
 interface Props {
   items: readonly NoticeItem[];
@@ -28,11 +29,11 @@ function byKey(event: KeyboardEvent<HTMLOListElement>): void {
   links[Math.max(0, Math.min(links.length - 1, to))]?.focus();
 }
 
-const times = (n: number): string => (n === 1 ? 'once' : `${n} times`);
+const times = (n: number): string => (n === 1 ? 'once' : noticeList.nTimes(n));
 
 export function NoticeList({ items, at, timeZone, onOpen, onMark }: Props) {
   return (
-    <ol className="divide-y divide-rule-faint" onKeyDown={byKey} aria-label="Notices, newest first">
+    <ol className="divide-y divide-rule-faint" onKeyDown={byKey} aria-label={noticeList.noticesNewestFirst}>
       {items.map((item) => {
         const unread = item.readAt === null;
         return (
@@ -49,7 +50,7 @@ export function NoticeList({ items, at, timeZone, onOpen, onMark }: Props) {
                   onClick={() => onOpen(item)}
                   className="-my-1 inline-block py-1 hover:underline"
                 >
-                  {unread && <span className="sr-only">Unread: </span>}
+                  {unread && <span className="sr-only">{noticeList.unread}</span>}
                   {item.headline}
                 </a>
               </p>
@@ -64,18 +65,20 @@ export function NoticeList({ items, at, timeZone, onOpen, onMark }: Props) {
                 )}
                 {item.site && <span>{item.site.name}</span>}
                 <SiteTime at={item.at} now={at} timeZone={timeZone} />
-                {item.came > 0 && <span>went and came back {times(item.came)}</span>}
-                {item.overAt && <Tag tone="petrol">over</Tag>}
+                {item.came > 0 && <span>{noticeList.wentAndCameBack(times(item.came))}</span>}
+                {item.overAt && <Tag tone="petrol">{noticeList.over}</Tag>}
               </p>
             </div>
             <Button
               data-mark
-              aria-label={`${unread ? 'Mark as read' : 'Mark as unread'}: ${item.headline}`}
+              aria-label={noticeList.unreadItem(unread, item.headline)}
               onClick={() => onMark(item, unread)}
               className="no-print shrink-0 px-2.5 text-sm sm:px-4"
             >
-              <span className="sm:hidden">{unread ? 'Read' : 'Unread'}</span>
-              <span className="hidden sm:inline">{unread ? 'Mark as read' : 'Mark as unread'}</span>
+              <span className="sm:hidden">{unread ? noticeList.read : noticeList.unread2}</span>
+              <span className="hidden sm:inline">
+                {unread ? noticeList.markAsRead : noticeList.markAsUnread}
+              </span>
             </Button>
           </li>
         );

@@ -16,6 +16,7 @@ import type { NoticeItem, NoticesPage, NoticesView } from '../../schemas/api/not
 import { paths } from '../../schemas/paths';
 import { NoticeList } from './NoticeList';
 import { inOrder, NOTICES_DEFAULTS, noticesFinding, type NoticesList } from './words';
+import { noticesWords } from '../../words/notices';
 
 interface Props {
   initial: NoticesPage;
@@ -71,15 +72,15 @@ export function Notices({ initial, view: { before, ...first } }: Props) {
           <>
             {page.hazards > 0 && view.kind !== 'hazard' && (
               <Button weight="primary" onClick={() => setView({ kind: 'hazard', show: 'unread' })}>
-                Show these only
+                {noticesWords.showTheseOnly}
               </Button>
             )}
             {page.unread > 0 && newest && (
               <Button disabled={marking.isPending} onClick={() => marking.mutate({ upTo: newest.number })}>
-                Mark all as read
+                {noticesWords.markAllAsRead}
               </Button>
             )}
-            <ButtonLink href={paths.accountNotices()}>Choose what you are told of</ButtonLink>
+            <ButtonLink href={paths.accountNotices()}>{noticesWords.chooseWhatYouAre}</ButtonLink>
           </>
         }
       />
@@ -90,7 +91,7 @@ export function Notices({ initial, view: { before, ...first } }: Props) {
       )}
       <Sheet
         id="notices"
-        title="Notices"
+        title={noticesWords.notices}
         aside={
           <LiveMark
             lostSince={!status.live && status.since ? status.since.toISOString() : null}
@@ -103,25 +104,25 @@ export function Notices({ initial, view: { before, ...first } }: Props) {
           onSubmit={(event) => event.preventDefault()}
         >
           <SearchInput
-            label="Find a notice or a site"
+            label={noticesWords.findANoticeOr}
             value={view.q}
             onChange={(typed) => setView({ q: typed }, 'typed')}
           />
           <Segmented
-            label="Which notices"
+            label={noticesWords.whichNotices}
             options={[
-              { value: 'all', label: 'All' },
-              { value: 'unread', label: 'Unread' },
+              { value: 'all', label: noticesWords.all },
+              { value: 'unread', label: noticesWords.unread },
             ]}
             value={view.show}
             onChange={(show) => setView({ show })}
           />
           <Choice
             inline
-            label="About"
+            label={noticesWords.about}
             value={view.kind}
             options={[
-              { value: 'all', label: 'everything' },
+              { value: 'all', label: noticesWords.everything },
               ...page.kinds.map((kind) => ({ value: kind, label: KINDS[kind].name })),
             ]}
             onChange={(kind) => setView({ kind: page.kinds.find((k) => k === kind) ?? 'all' })}
@@ -129,11 +130,11 @@ export function Notices({ initial, view: { before, ...first } }: Props) {
           {page.sites.length > 1 && (
             <Choice
               inline
-              label="Site"
+              label={noticesWords.site}
               value={view.site}
               className="min-w-0 [&_select]:max-w-[220px]"
               options={[
-                { value: '', label: 'every site' },
+                { value: '', label: noticesWords.everySite },
                 ...page.sites.map((s) => ({ value: s.id, label: s.name })),
               ]}
               onChange={(site) => setView({ site })}
@@ -144,8 +145,8 @@ export function Notices({ initial, view: { before, ...first } }: Props) {
           </ButtonLink>
         </form>
         {page.items.length === 0 ? (
-          <Notice kind="empty" title={filtered ? 'No notice fits these filters' : 'No notices yet'}>
-            {filtered ? 'Use fewer words, or look at everything.' : ''}
+          <Notice kind="empty" title={filtered ? noticesWords.noNoticeFitsThese : noticesWords.noNoticesYet}>
+            {filtered ? noticesWords.useFewerWordsOr : ''}
           </Notice>
         ) : (
           <NoticeList
@@ -158,7 +159,7 @@ export function Notices({ initial, view: { before, ...first } }: Props) {
         )}
         {page.next !== null && !isFetching && (
           <ButtonLink href={withQuery(paths.notices(), { ...query, before: page.next })} className="mt-3">
-            Older
+            {noticesWords.older}
           </ButtonLink>
         )}
       </Sheet>

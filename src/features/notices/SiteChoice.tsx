@@ -1,6 +1,7 @@
 import { useState } from 'react';
 import { SearchInput } from '../../components/ui/SearchInput';
 import { Segmented } from '../../components/ui/Segmented';
+import { siteChoice } from '../../words/notices';
 
 interface Props {
   sites: readonly { id: string; name: string }[];
@@ -20,16 +21,16 @@ export function SiteChoice({ sites, chosen, error, hasHazards, onChange }: Props
     <>
       <Segmented
         look="bold"
-        label="Of which sites"
+        label={siteChoice.ofWhichSites}
         options={[
-          { value: 'all', label: 'Every site' },
-          { value: 'chosen', label: 'Chosen sites' },
+          { value: 'all', label: siteChoice.everySite },
+          { value: 'chosen', label: siteChoice.chosenSites },
         ]}
         value={chosen === null ? 'all' : 'chosen'}
         onChange={(value) => onChange(value === 'all' ? null : sites.map((s) => s.id))}
       />
       {hasHazards && chosen !== null && (
-        <p className="mt-2 text-sm text-ink-2">Hazards come from every site all the same.</p>
+        <p className="mt-2 text-sm text-ink-2">{siteChoice.hazardsComeFromEvery}</p>
       )}
       {error && (
         <p role="alert" className="mt-2 text-sm font-medium text-rust-ink">
@@ -38,9 +39,9 @@ export function SiteChoice({ sites, chosen, error, hasHazards, onChange }: Props
       )}
       {chosen !== null && (
         <fieldset className="mt-3">
-          <legend className="sr-only">Sites</legend>
+          <legend className="sr-only">{siteChoice.sites}</legend>
           {sites.length >= SEARCH_FROM && (
-            <SearchInput label="Find a site" value={q} onChange={setQ} className="mb-2" />
+            <SearchInput label={siteChoice.findASite} value={q} onChange={setQ} className="mb-2" />
           )}
           <div className="max-h-[320px] overflow-y-auto">
             {shown.map((site) => (

@@ -4,11 +4,11 @@ import { Notice } from '../../components/ui/Notice';
 import { Sheet } from '../../components/ui/Sheet';
 import { Tag } from '../../components/ui/Tag';
 import { CASE_STATE_WORDS } from '../../domain/cases/cases';
-import { counted } from '../../drawings/numbers';
 import { api } from '../../lib/api';
 import { queryClient } from '../../lib/query-client';
 import type { CaseItem } from '../../schemas/api/cases';
 import { paths } from '../../schemas/paths';
+import { casesSheet } from '../../words/site';
 
 const EVERY_MS = 60_000;
 
@@ -24,16 +24,16 @@ export function CasesSheet({ site, initial }: { site: string; initial: readonly 
     queryClient(),
   );
   return (
-    <Sheet id="cases" title="Cases" aside={counted(cases.length, 'case is open', 'cases are open')}>
+    <Sheet id="cases" title={casesSheet.cases} aside={casesSheet.countedCasesCaseIs(cases.length)}>
       {error && (
         <div className="mb-3">
-          <Notice kind="stale" title="The cases could not be read anew">
+          <Notice kind="stale" title={casesSheet.theCasesCouldNot}>
             {error.message}
           </Notice>
         </div>
       )}
       {cases.length === 0 ? (
-        <Notice kind="empty" title="Nobody works on anything here" />
+        <Notice kind="empty" title={casesSheet.nobodyWorksOnAnything} />
       ) : (
         <ul className="divide-y divide-rule-faint border-y border-rule-faint">
           {cases.map((c) => (
@@ -48,18 +48,18 @@ export function CasesSheet({ site, initial }: { site: string; initial: readonly 
               </a>
               <span className="flex flex-wrap items-center gap-x-3 gap-y-1 text-sm text-ink-2">
                 {c.strings.map((s) => s.name).join(', ')}
-                {c.overdue && <Tag tone="rust">overdue</Tag>}
+                {c.overdue && <Tag tone="rust">{casesSheet.overdue}</Tag>}
                 <span>{CASE_STATE_WORDS[c.state].toLowerCase()}</span>
-                <span>{c.assignee?.name ?? 'nobody yet'}</span>
+                <span>{c.assignee?.name ?? casesSheet.nobodyYet}</span>
               </span>
             </li>
           ))}
         </ul>
       )}
       <div className="no-print mt-3 flex flex-wrap gap-2">
-        <ButtonLink href={paths.caseNew({ site })}>Open a case</ButtonLink>
+        <ButtonLink href={paths.caseNew({ site })}>{casesSheet.openACase}</ButtonLink>
         <ButtonLink href={`${paths.cases()}?look=list&site=${site}&show=all`}>
-          All cases of this site
+          {casesSheet.allCasesOfThis}
         </ButtonLink>
       </div>
     </Sheet>

@@ -7,12 +7,12 @@ import { Notice } from '../../components/ui/Notice';
 import { Sheet } from '../../components/ui/Sheet';
 import { SiteTime } from '../../components/ui/Time';
 import { eventWords, KINDS } from '../../domain/verdicts/event-words';
-import { duration } from '../../drawings/times';
 import { queryClient } from '../../lib/query-client';
 import type { EventItem } from '../../schemas/api/now';
 import type { EventsPage } from '../../schemas/api/site';
 import { paths } from '../../schemas/paths';
 import { eventsQuery, type KindWanted } from './query';
+import { eventsSheet } from '../../words/site';
 
 /** Recorded this much later than it happened, an event was replayed. */
 const LATE_FROM_S = 300;
@@ -45,7 +45,7 @@ function Line({
         )}
         {eventWords(event.kind, event.detail).words}
         {lateS > LATE_FROM_S && (
-          <span className="text-sm text-ink-2"> (reported {duration(lateS)} later)</span>
+          <span className="text-sm text-ink-2">{eventsSheet.reportedLater(lateS)}</span>
         )}
       </span>
     </li>
@@ -73,33 +73,33 @@ export function EventsSheet({ site, initial, now, timeZone, zone, kind, onKind }
   return (
     <Sheet
       id="events"
-      title="Events"
+      title={eventsSheet.events}
       aside={
         <Choice
           inline
           className="no-print"
-          label="Kind"
+          label={eventsSheet.kind}
           value={kind}
-          options={[{ value: 'all', label: 'All' }, ...KINDS]}
+          options={[{ value: 'all', label: eventsSheet.all }, ...KINDS]}
           onChange={(wanted) => onKind(wanted as KindWanted)}
         />
       }
     >
-      <NotRead error={error} title="Events could not be read" kind="failed" onRetry={() => refetch()} />
+      <NotRead error={error} title={eventsSheet.eventsCouldNotBe} kind="failed" onRetry={() => refetch()} />
       {!error && !isFetching && events.length === 0 && (
         <Notice
           kind="empty"
-          title={kind === 'all' ? 'Nothing has happened yet' : 'Nothing of this kind has happened'}
+          title={kind === 'all' ? eventsSheet.nothingHasHappenedYet : eventsSheet.nothingOfThisKind}
         />
       )}
-      <ol aria-label="Events, newest first">
+      <ol aria-label={eventsSheet.eventsNewestFirst}>
         {events.map((event) => (
           <Line key={event.id} event={event} now={now} timeZone={timeZone} zone={zone} />
         ))}
       </ol>
       {hasNextPage && (
         <Button className="no-print mt-3" disabled={isFetching} onClick={() => void fetchNextPage()}>
-          {isFetching ? 'Reading older ones …' : 'Older ones'}
+          {isFetching ? eventsSheet.readingOlderOnes : eventsSheet.olderOnes}
         </Button>
       )}
     </Sheet>

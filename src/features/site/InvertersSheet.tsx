@@ -2,17 +2,18 @@ import { Notice } from '../../components/ui/Notice';
 import { Sheet } from '../../components/ui/Sheet';
 import { Tag, type Tone } from '../../components/ui/Tag';
 import { SiteTime } from '../../components/ui/Time';
-import { amperes, listed, power, quantity, volts } from '../../drawings/numbers';
+import { amperes, listed, quantity, volts } from '../../drawings/numbers';
 import type { InverterStatus } from '../../domain/verdicts/codes';
 import type { InverterNow } from '../../schemas/api/now';
+import { invertersSheet } from '../../words/site';
 
 const STATUS: Record<InverterStatus, { word: string; tone: Tone }> = {
-  standby: { word: 'Standby', tone: 'plain' },
-  running: { word: 'Running', tone: 'petrol' },
-  derated: { word: 'Derated', tone: 'rust' },
-  curtailed: { word: 'Curtailed', tone: 'plain' },
-  grid_lost: { word: 'Grid lost', tone: 'rust' },
-  fault: { word: 'In fault', tone: 'rust' },
+  standby: { word: invertersSheet.standby, tone: 'plain' },
+  running: { word: invertersSheet.running, tone: 'petrol' },
+  derated: { word: invertersSheet.derated, tone: 'rust' },
+  curtailed: { word: invertersSheet.curtailed, tone: 'plain' },
+  grid_lost: { word: invertersSheet.gridLost, tone: 'rust' },
+  fault: { word: invertersSheet.inFault, tone: 'rust' },
 };
 
 const insulation = (kilohm: number | null): string =>
@@ -28,8 +29,12 @@ interface Props {
 /** Inverters with what they say of themselves, and their inputs. Their flags are theirs: Wakeline detects neither. */
 export function InvertersSheet({ inverters, now, timeZone, zone }: Props) {
   return (
-    <Sheet id="inverters" title="Inverters and inputs" aside="as the inverters report themselves">
-      {inverters.length === 0 && <Notice kind="empty" title="No inverter is entered for this site" />}
+    <Sheet
+      id="inverters"
+      title={invertersSheet.invertersAndInputs}
+      aside={invertersSheet.asTheInvertersReport}
+    >
+      {inverters.length === 0 && <Notice kind="empty" title={invertersSheet.noInverterIsEntered} />}
       <div className="grid gap-x-10 gap-y-6 lg:grid-cols-2">
         {inverters.map((inverter) => (
           <section key={inverter.name} aria-label={inverter.name} className="min-w-0">
@@ -41,45 +46,44 @@ export function InvertersSheet({ inverters, now, timeZone, zone }: Props) {
                 )}
                 {inverter.arcFlag && (
                   <Tag tone="rust" shape="▲">
-                    Arc flag
+                    {invertersSheet.arcFlag}
                   </Tag>
                 )}
                 {inverter.earthFaultFlag && (
                   <Tag tone="rust" shape="▲">
-                    Earth-fault flag
+                    {invertersSheet.earthFaultFlag}
                   </Tag>
                 )}
               </span>
             </div>
             <p className="mt-1 text-sm text-ink-2">
-              {power(inverter.acPower)} of {power(inverter.acPowerMax)}
+              {invertersSheet.acPowerOfAcPower(inverter.acPower, inverter.acPowerMax)}
               {inverter.powerLimit !== null &&
                 inverter.powerLimit < inverter.acPowerMax &&
-                `, limited to ${power(inverter.powerLimit)}`}
-              {' · '}insulation {insulation(inverter.insulation)}
-              {' · '}
+                invertersSheet.limitedTo(inverter.powerLimit)}
+              {invertersSheet.insulationInsulation(insulation(inverter.insulation))}
               {inverter.at ? (
                 <SiteTime at={inverter.at} now={now} timeZone={timeZone} zone={zone} />
               ) : (
-                'not reported yet'
+                invertersSheet.notReportedYet
               )}
             </p>
             <div className="mt-2 overflow-x-auto">
               <table className="w-full border-collapse text-left">
-                <caption className="sr-only">Inputs of {inverter.name}</caption>
+                <caption className="sr-only">{invertersSheet.inputsOf(inverter.name)}</caption>
                 <thead>
                   <tr className="border-b border-rule text-sm text-ink-2">
                     <th scope="col" className="py-1 pr-4 font-medium">
-                      Input
+                      {invertersSheet.input}
                     </th>
                     <th scope="col" className="py-1 pr-4 font-medium">
-                      Strings
+                      {invertersSheet.strings}
                     </th>
                     <th scope="col" className="py-1 pr-4 text-right font-medium">
-                      Voltage
+                      {invertersSheet.voltage}
                     </th>
                     <th scope="col" className="py-1 text-right font-medium">
-                      Current
+                      {invertersSheet.current}
                     </th>
                   </tr>
                 </thead>

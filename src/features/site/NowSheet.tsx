@@ -3,21 +3,22 @@ import { Sheet } from '../../components/ui/Sheet';
 import { SiteTime } from '../../components/ui/Time';
 import { MixBar } from '../../drawings/MixBar';
 import { MIX_WORDS, mixParts } from '../../drawings/mix';
-import { counted, number, percent, power } from '../../drawings/numbers';
+import { number, percent, power } from '../../drawings/numbers';
 import type { SitePage } from '../../schemas/api/site';
 import { paths } from '../../schemas/paths';
+import { nowSheet } from '../../words/site';
 
 const RULES: Record<SitePage['ruleSet'], string> = {
-  rapid_shutdown_30s: 'Rapid shutdown within 30 s',
-  rapid_shutdown_10s: 'Rapid shutdown within 10 s (older edition)',
-  hazard_control: 'Listed hazard-control system',
-  none: 'No shutdown rule',
+  rapid_shutdown_30s: nowSheet.rapidShutdownWithin30,
+  rapid_shutdown_10s: nowSheet.rapidShutdownWithin10,
+  hazard_control: nowSheet.listedHazardControlSystem,
+  none: nowSheet.noShutdownRule,
 };
 const TEST: Record<NonNullable<SitePage['lastShutdownTest']>['result'], string> = {
   passed: 'passed',
   failed: 'failed',
-  consistent: 'consistent by telemetry alone',
-  not_witnessed: 'not witnessed',
+  consistent: nowSheet.consistentByTelemetryAlone,
+  not_witnessed: nowSheet.notWitnessed,
 };
 
 /** Power against what the inverters can do, as a measure on a rule. */
@@ -26,7 +27,7 @@ function PowerMeasure({ watts, most }: { watts: number | null; most: number }) {
   return (
     <div>
       <p className="text-[28px] font-semibold leading-9 tracking-[-0.02em]">
-        {power(watts)} <span className="text-base font-normal text-ink-2">of {power(most)}</span>
+        {power(watts)} <span className="text-base font-normal text-ink-2">{nowSheet.ofMost(most)}</span>
       </p>
       <svg
         viewBox="0 0 200 10"
@@ -34,18 +35,14 @@ function PowerMeasure({ watts, most }: { watts: number | null; most: number }) {
         height="10"
         preserveAspectRatio="none"
         role="img"
-        aria-label={
-          share === null ? 'Power not known just now' : `${percent(share)} of the inverters' capacity`
-        }
+        aria-label={share === null ? nowSheet.powerNotKnownJust : nowSheet.ofTheInvertersCapacity(share)}
         className="mt-1"
       >
         <rect width="200" height="10" fill="var(--rule-faint)" />
         {share !== null && <rect width={200 * share} height="10" fill="var(--petrol)" opacity="0.82" />}
       </svg>
       <p className="mt-1 text-sm text-ink-2">
-        {share === null
-          ? 'No inverter has reported lately.'
-          : `${percent(share)} of what the inverters can do`}
+        {share === null ? nowSheet.noInverterHasReported : nowSheet.ofWhatTheInverters(share)}
       </p>
     </div>
   );
@@ -60,14 +57,15 @@ export function NowSheet({ page, now, zone }: { page: SitePage; now: string; zon
   return (
     <Sheet
       id="now"
-      title="Now"
+      title={nowSheet.now}
       aside={
         site.reportedAt ? (
           <>
-            newest report <SiteTime at={site.reportedAt} now={now} timeZone={site.timeZone} zone={zone} />
+            {nowSheet.newestReport}
+            <SiteTime at={site.reportedAt} now={now} timeZone={site.timeZone} zone={zone} />
           </>
         ) : (
-          'no report yet'
+          nowSheet.noReportYet
         )
       }
     >
@@ -88,13 +86,13 @@ export function NowSheet({ page, now, zone }: { page: SitePage; now: string; zon
             ))}
           </ul>
           <p className="mt-1 text-sm text-ink-2">
-            {counted(site.counts.units, 'unit')} in {counted(site.strings, 'string')}
-            {site.counts.unconfirmed > 0 && `; ${number(site.counts.unconfirmed)} can't be confirmed`}
+            {nowSheet.unitsInStrings(site.counts.units, site.strings)}
+            {site.counts.unconfirmed > 0 && nowSheet.cantBeConfirmed(site.counts.unconfirmed)}
           </p>
         </div>
         <dl className="text-sm md:col-span-2 xl:col-span-1">
           <div className={row}>
-            <dt className="text-ink-2">Contact</dt>
+            <dt className="text-ink-2">{nowSheet.contact}</dt>
             <dd className="text-right">
               {contact.name || '–'}
               {contact.phone && (
@@ -108,15 +106,15 @@ export function NowSheet({ page, now, zone }: { page: SitePage; now: string; zon
             </dd>
           </div>
           <div className={row}>
-            <dt className="shrink-0 text-ink-2">Shutdown switch</dt>
-            <dd className="text-right">{contact.shutdownSwitchPlace || 'not recorded'}</dd>
+            <dt className="shrink-0 text-ink-2">{nowSheet.shutdownSwitch}</dt>
+            <dd className="text-right">{contact.shutdownSwitchPlace || nowSheet.notRecorded}</dd>
           </div>
           <div className={row}>
-            <dt className="text-ink-2">Rule set</dt>
+            <dt className="text-ink-2">{nowSheet.ruleSet}</dt>
             <dd className="text-right">{RULES[page.ruleSet]}</dd>
           </div>
           <div className={row}>
-            <dt className="text-ink-2">Last shutdown test</dt>
+            <dt className="text-ink-2">{nowSheet.lastShutdownTest}</dt>
             <dd className="text-right">
               <a href={paths.shutdownTests(site.id)} className="text-petrol hover:underline">
                 {page.lastShutdownTest ? (
@@ -125,22 +123,22 @@ export function NowSheet({ page, now, zone }: { page: SitePage; now: string; zon
                     <SiteTime at={page.lastShutdownTest.at} now={now} timeZone={site.timeZone} />
                   </>
                 ) : (
-                  'none recorded'
+                  nowSheet.noneRecorded
                 )}
               </a>
             </dd>
           </div>
           <div className={row}>
-            <dt className="text-ink-2">Performance ratio, 30 d</dt>
+            <dt className="text-ink-2">{nowSheet.performanceRatio30D}</dt>
             <dd>{percent(site.performanceRatio30d, 1)}</dd>
           </div>
         </dl>
       </div>
       <div className="no-print mt-4 flex flex-wrap gap-2">
         <ButtonLink href={paths.rollCall(site.id)}>
-          {page.rollCall ? `Roll call under way, ${page.rollCall.personOnSite} on site` : 'Roll call'}
+          {page.rollCall ? nowSheet.rollCallUnderWay(page.rollCall.personOnSite) : nowSheet.rollCall}
         </ButtonLink>
-        <ButtonLink href={paths.customer(site.id)}>Customer's page</ButtonLink>
+        <ButtonLink href={paths.customer(site.id)}>{nowSheet.customersPage}</ButtonLink>
       </div>
     </Sheet>
   );

@@ -2,9 +2,9 @@ import { Notice } from '../../components/ui/Notice';
 import { Sheet } from '../../components/ui/Sheet';
 import { Tag } from '../../components/ui/Tag';
 import { SiteTime } from '../../components/ui/Time';
-import { counted } from '../../drawings/numbers';
 import type { SitePage } from '../../schemas/api/site';
 import { paths } from '../../schemas/paths';
+import { radioSheet } from '../../words/site';
 
 const line =
   'flex flex-wrap items-baseline justify-between gap-x-4 border-b border-rule-faint py-2 last:border-b-0';
@@ -15,8 +15,8 @@ export function RadioSheet({ page, now, zone }: { page: SitePage; now: string; z
   const at = (time: string | null) =>
     time ? <SiteTime at={time} now={now} timeZone={site.timeZone} zone={zone} /> : 'never';
   return (
-    <Sheet id="radio" title="Gateways and loggers" aside="gateways are learned from what is heard">
-      {gateways.length === 0 && <Notice kind="empty" title="No gateway has been heard yet" />}
+    <Sheet id="radio" title={radioSheet.gatewaysAndLoggers} aside={radioSheet.gatewaysAreLearnedFrom}>
+      {gateways.length === 0 && <Notice kind="empty" title={radioSheet.noGatewayHasBeen} />}
       <ul>
         {gateways.map((gateway) => (
           <li key={`${gateway.number} ${gateway.name}`} className={line}>
@@ -24,18 +24,21 @@ export function RadioSheet({ page, now, zone }: { page: SitePage; now: string; z
             <span className="flex flex-wrap items-baseline gap-x-3 text-sm text-ink-2">
               {gateway.silent && (
                 <Tag tone="slate" shape="▨">
-                  Silent
+                  {radioSheet.silent}
                 </Tag>
               )}
-              {counted(gateway.units, 'unit')} by it · heard {at(gateway.lastHeardAt)}
+              {radioSheet.byItHeard(gateway.units)}
+              {at(gateway.lastHeardAt)}
             </span>
           </li>
         ))}
         {loggers.map((logger) => (
           <li key={logger.serial} className={line}>
-            <span className="font-semibold">Logger {logger.serial}</span>
+            <span className="font-semibold">{radioSheet.loggerSerial(logger.serial)}</span>
             <span className="text-sm text-ink-2">
-              {logger.firmware && `firmware ${logger.firmware} · `}last spoke {at(logger.lastSpokeAt)}
+              {logger.firmware && radioSheet.firmwareFirmware(logger.firmware)}
+              {radioSheet.lastSpoke}
+              {at(logger.lastSpokeAt)}
             </span>
           </li>
         ))}
@@ -44,12 +47,10 @@ export function RadioSheet({ page, now, zone }: { page: SitePage; now: string; z
         className="target inline-flex items-center text-petrol hover:underline"
         href={paths.loggers(site.id)}
       >
-        Tokens of the loggers, and what was refused
+        {radioSheet.tokensOfTheLoggers}
       </a>
       {gateways.some((g) => g.silent) && (
-        <p className="mt-2 text-sm text-ink-2">
-          Whether units behind a silent gateway follow a shutdown can't be confirmed until it is heard again.
-        </p>
+        <p className="mt-2 text-sm text-ink-2">{radioSheet.whetherUnitsBehindA}</p>
       )}
     </Sheet>
   );

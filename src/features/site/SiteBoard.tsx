@@ -35,6 +35,7 @@ import {
   type EventsRead,
   type KindWanted,
 } from './query';
+import { siteBoard } from '../../words/site';
 
 interface Props {
   initial: SitePage;
@@ -76,61 +77,61 @@ export function SiteBoard({ initial, events, kind: initialKind, cases, standing,
     <>
       <LiveHeading
         crumbs={[
-          { label: 'Fleet', href: paths.fleet() },
+          { label: siteBoard.fleet, href: paths.fleet() },
           { label: page.site.place ? `${page.site.name}, ${page.site.place}` : page.site.name },
         ]}
         finding={finding}
         status={status}
         timeZone={timeZone}
       />
-      <nav aria-label="On the roof" className="no-print -mt-3 mb-5 flex flex-wrap gap-x-5 text-sm">
+      <nav aria-label={siteBoard.onTheRoof} className="no-print -mt-3 mb-5 flex flex-wrap gap-x-5 text-sm">
         <a className="target inline-flex items-center text-petrol hover:underline" href={paths.walk(id)}>
-          Walk the roof
+          {siteBoard.walkTheRoof}
         </a>
         <a
           className="target inline-flex items-center text-petrol hover:underline"
           href={paths.membership(id)}
         >
-          Who is in which string
+          {siteBoard.whoIsInWhich}
         </a>
         <a
           className="target inline-flex items-center text-petrol hover:underline"
           href={paths.siteFigures(id)}
         >
-          Figures
+          {siteBoard.figures}
         </a>
         <a
           className="target inline-flex items-center text-petrol hover:underline"
           href={paths.plannedWorks(id)}
         >
-          Planned works
+          {siteBoard.plannedWorks}
         </a>
         <a className="target inline-flex items-center text-petrol hover:underline" href={paths.loggers(id)}>
-          Loggers
+          {siteBoard.loggers}
         </a>
         {mayImport && (
           <a
             className="target inline-flex items-center text-petrol hover:underline"
             href={paths.historyImport(id)}
           >
-            Earlier readings
+            {siteBoard.earlierReadings}
           </a>
         )}
       </nav>
       <StandingSheet siteId={id} standing={standing} now={now} timeZone={timeZone} />
       <NotRead
         error={error}
-        title="The site could not be read anew"
+        title={siteBoard.theSiteCouldNot}
         kind="failed"
         onRetry={() => refetch()}
         className="mb-6"
       >
-        What is shown may be old.
+        {siteBoard.whatIsShownMay}
       </NotRead>
       {causes.length > 0 && (
         <section aria-labelledby="causes" className="mb-6">
           <h2 id="causes" className="mb-2.5 text-[15px] leading-5 tracking-[-0.01em]">
-            Causes to act on
+            {siteBoard.causesToActOn}
           </h2>
           <div className="grid items-stretch gap-4 md:grid-cols-2 xl:grid-cols-3">
             {causes.map((cause) => (
@@ -151,11 +152,7 @@ export function SiteBoard({ initial, events, kind: initialKind, cases, standing,
         </section>
       )}
       <div className="mb-6">
-        <Caution strong="Strings stay dangerous in light.">
-          Shutdown is not isolation: each module and its leads to its unit stay at module voltage. Never open
-          a connector under load. Isolate, lock out, prove dead with a rated meter; licensed or qualified
-          people, local code first.
-        </Caution>
+        <Caution strong={siteBoard.stringsStayDangerousIn}>{siteBoard.shutdownIsNotIsolation}</Caution>
       </div>
       <div className="space-y-6">
         <NowSheet page={page} now={now} zone={zone} />

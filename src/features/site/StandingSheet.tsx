@@ -1,10 +1,10 @@
 import { Notice } from '../../components/ui/Notice';
 import { Sheet } from '../../components/ui/Sheet';
 import { SiteTime } from '../../components/ui/Time';
-import { energy } from '../../drawings/numbers';
 import { withQuery } from '../../lib/api';
 import type { SiteStanding } from '../../schemas/api/causes';
 import { paths } from '../../schemas/paths';
+import { standingSheet } from '../../words/site';
 
 interface Props {
   siteId: string;
@@ -21,19 +21,22 @@ export function StandingSheet({ siteId, standing, now, timeZone }: Props) {
     <>
       {going.map((w) => (
         <div key={w.id} className="mb-4">
-          <Notice kind="stale" title={`Planned works: ${w.reason}`}>
-            {w.strings === null ? 'At the whole site' : `At ${w.strings.join(', ')}`} until{' '}
-            <SiteTime at={w.endsAt} now={now} timeZone={timeZone} />. What happens there is no alarm until
-            then; units that don’t shut down are. <a href={paths.plannedWorks(siteId)}>Planned works</a>
+          <Notice kind="stale" title={standingSheet.plannedWorks(w.reason)}>
+            {standingSheet.stringsUntil(
+              w.strings === null ? 'At the whole site' : `At ${w.strings.join(', ')}`,
+            )}
+            <SiteTime at={w.endsAt} now={now} timeZone={timeZone} />
+            {standingSheet.whatHappensThereIs}
+            <a href={paths.plannedWorks(siteId)}>{standingSheet.plannedWorks2}</a>
           </Notice>
         </div>
       ))}
       {daily.length > 0 && (
         <Sheet
           id="nights-found"
-          title="What the nights have found"
+          title={standingSheet.whatTheNightsHave}
           className="mb-6"
-          aside={<a href={withQuery(paths.causes(), { site: siteId })}>all causes here</a>}
+          aside={<a href={withQuery(paths.causes(), { site: siteId })}>{standingSheet.allCausesHere}</a>}
         >
           <ul className="divide-y divide-rule-faint">
             {daily.map((c) => (
@@ -42,8 +45,9 @@ export function StandingSheet({ siteId, standing, now, timeZone }: Props) {
                   {c.headline}
                 </a>
                 <span className="text-sm text-ink-2">
-                  since <SiteTime at={c.since} now={now} timeZone={timeZone} />
-                  {c.lossWhDay !== null && c.lossWhDay >= 1 && ` · ${energy(c.lossWhDay)} a day`}
+                  {standingSheet.since}
+                  <SiteTime at={c.since} now={now} timeZone={timeZone} />
+                  {c.lossWhDay !== null && c.lossWhDay >= 1 && standingSheet.lossWhDayADay(c.lossWhDay)}
                 </span>
               </li>
             ))}

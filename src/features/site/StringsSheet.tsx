@@ -6,10 +6,11 @@ import { Sheet } from '../../components/ui/Sheet';
 import { Table, type Column } from '../../components/ui/Table';
 import { Tag } from '../../components/ui/Tag';
 import { Comb } from '../../drawings/Comb';
-import { amperes, counted, decibelMilliwatts, number, power, volts } from '../../drawings/numbers';
+import { amperes, decibelMilliwatts, power, volts } from '../../drawings/numbers';
 import type { StringNow } from '../../schemas/api/now';
 import { paths } from '../../schemas/paths';
 import { hearingOf, sortedStrings, type StringSort } from './tally';
+import { stringsSheet } from '../../words/site';
 
 /** What is open on a string, in tags; none: nothing is. */
 function Open({ string }: { string: StringNow }) {
@@ -19,27 +20,27 @@ function Open({ string }: { string: StringNow }) {
       {counts.notShuttingDown > 0 && <StateTag state={null} verdict="not_shutting_down" />}
       {finding?.kind === 'not_shutting_down' && (
         <Tag tone="crimson" shape="◆" title={finding.words}>
-          Conductors stay live
+          {stringsSheet.conductorsStayLive}
         </Tag>
       )}
       {counts.stuck > 0 && (
         <Tag tone="rust" shape="▼">
-          {number(counts.stuck)} stuck
+          {stringsSheet.stuckStuck(counts.stuck)}
         </Tag>
       )}
       {finding?.kind === 'stuck_positions_unknown' && (
         <Tag tone="rust" shape="▼" title={finding.words}>
-          Stuck, positions unknown
+          {stringsSheet.stuckPositionsUnknown}
         </Tag>
       )}
       {finding?.kind === 'unexplained_voltage' && (
         <Tag tone="plain" shape="?" title={finding.words}>
-          Voltage not explained
+          {stringsSheet.voltageNotExplained}
         </Tag>
       )}
       {counts.unconfirmed > 0 && (
         <Tag tone="slate" shape="?">
-          {number(counts.unconfirmed)} unconfirmed
+          {stringsSheet.unconfirmedUnconfirmed(counts.unconfirmed)}
         </Tag>
       )}
     </span>
@@ -61,19 +62,17 @@ function Combs({ string }: { string: StringNow }) {
 }
 
 function Heard({ string }: { string: StringNow }) {
-  if (string.kind === 'shutdown_only') return <span className="text-ink-2">tells nothing</span>;
+  if (string.kind === 'shutdown_only') return <span className="text-ink-2">{stringsSheet.tellsNothing}</span>;
   const { heard, units } = hearingOf(string);
   return (
-    <span className={heard < units ? 'font-semibold' : ''}>
-      {number(heard)} of {number(units)}
-    </span>
+    <span className={heard < units ? 'font-semibold' : ''}>{stringsSheet.heardOfUnits(heard, units)}</span>
   );
 }
 
 const columnsFor = (site: string): Column<StringNow>[] => [
   {
     key: 'name',
-    label: 'String',
+    label: stringsSheet.string,
     sortable: true,
     cell: (string) => (
       <a
@@ -86,7 +85,7 @@ const columnsFor = (site: string): Column<StringNow>[] => [
   },
   {
     key: 'need',
-    label: 'Units',
+    label: stringsSheet.units,
     sortable: true,
     cell: (string) => (
       <div className="space-y-1">
@@ -97,19 +96,19 @@ const columnsFor = (site: string): Column<StringNow>[] => [
   },
   {
     key: 'voltage',
-    label: 'Voltage',
+    label: stringsSheet.voltage,
     numeric: true,
     sortable: true,
     cell: (string) => (
       <>
         {volts(string.voltage)}
         {string.expectedInShutdown !== null ? (
-          <span className="block text-xs text-ink-2" title="with every unit in shutdown, by the type entered">
-            {volts(string.expectedInShutdown)} in shutdown
+          <span className="block text-xs text-ink-2" title={stringsSheet.withEveryUnitIn}>
+            {stringsSheet.inShutdown(string.expectedInShutdown)}
           </span>
         ) : string.expectedVoltage !== null ? (
-          <span className="block text-xs text-ink-2" title={`expected by ${string.expectedFrom}`}>
-            {volts(string.expectedVoltage)} expected
+          <span className="block text-xs text-ink-2" title={stringsSheet.expectedBy(string.expectedFrom)}>
+            {stringsSheet.expectedVoltageExpected(string.expectedVoltage)}
           </span>
         ) : null}
       </>
@@ -117,17 +116,30 @@ const columnsFor = (site: string): Column<StringNow>[] => [
   },
   {
     key: 'current',
-    label: 'Current',
+    label: stringsSheet.current,
     numeric: true,
     sortable: true,
     from: 'md',
     cell: (s) => amperes(s.current),
   },
-  { key: 'power', label: 'Power', numeric: true, sortable: true, from: 'lg', cell: (s) => power(s.power) },
-  { key: 'heard', label: 'Heard', numeric: true, from: 'sm', cell: (string) => <Heard string={string} /> },
+  {
+    key: 'power',
+    label: stringsSheet.power,
+    numeric: true,
+    sortable: true,
+    from: 'lg',
+    cell: (s) => power(s.power),
+  },
+  {
+    key: 'heard',
+    label: stringsSheet.heard,
+    numeric: true,
+    from: 'sm',
+    cell: (string) => <Heard string={string} />,
+  },
   {
     key: 'signal',
-    label: 'Weakest signal',
+    label: stringsSheet.weakestSignal,
     numeric: true,
     sortable: true,
     from: 'md',
@@ -136,7 +148,7 @@ const columnsFor = (site: string): Column<StringNow>[] => [
       return weakest ? (
         <>
           {decibelMilliwatts(weakest.signal)}
-          <span className="block text-xs text-ink-2">position {weakest.position}</span>
+          <span className="block text-xs text-ink-2">{stringsSheet.positionPosition(weakest.position)}</span>
         </>
       ) : (
         '–'
@@ -167,25 +179,25 @@ export function StringsSheet({ site, strings }: { site: string; strings: readonl
     <Sheet
       id="strings"
       flush
-      title="Strings"
+      title={stringsSheet.strings}
       aside={
         <>
-          {counted(shown.length, 'string')}
-          {shown.length < strings.length && ` of ${number(strings.length)}`}
+          {stringsSheet.countedShownString(shown.length)}
+          {shown.length < strings.length && stringsSheet.ofStrings(strings.length)}
         </>
       }
     >
       {strings.length > 8 && (
         <SearchInput
-          label="Filter strings by name or serial"
-          placeholder="Filter by name or serial"
+          label={stringsSheet.filterStringsByName}
+          placeholder={stringsSheet.filterByNameOr}
           value={wanted}
           onChange={setWanted}
           className="no-print mb-2 sm:w-[220px]"
         />
       )}
       <Table
-        caption="Strings with their units as a comb, voltage, current, power, units heard and weakest signal"
+        caption={stringsSheet.stringsWithTheirUnits}
         columns={columns}
         rows={shown}
         rowKey={(string) => string.id}
@@ -200,10 +212,10 @@ export function StringsSheet({ site, strings }: { site: string; strings: readonl
         }
         empty={
           strings.length === 0 ? (
-            <Notice kind="empty" title="No string is entered for this site" />
+            <Notice kind="empty" title={stringsSheet.noStringIsEntered} />
           ) : (
-            <Notice kind="empty" title="No string matches">
-              Another name or serial may.
+            <Notice kind="empty" title={stringsSheet.noStringMatches}>
+              {stringsSheet.anotherNameOrSerial}
             </Notice>
           )
         }

@@ -3,15 +3,15 @@ import { Sheet } from '../../components/ui/Sheet';
 import { Table, type Column } from '../../components/ui/Table';
 import { Tag } from '../../components/ui/Tag';
 import { SiteTime } from '../../components/ui/Time';
-import { counted } from '../../drawings/numbers';
 import type { CommandNow } from '../../schemas/api/now';
 import type { ZoneNow } from '../../schemas/api/site';
+import { zonesSheet } from '../../words/site';
 
 const WORDS: Record<CommandNow['inForce'], { word: string; tone: 'plum' | 'petrol' | 'rust' }> = {
-  initiator: { word: 'In shutdown, initiator open', tone: 'plum' },
-  keep_alive_lost: { word: 'In shutdown, keep-alive gone', tone: 'rust' },
-  power_lost: { word: 'In shutdown, power gone', tone: 'rust' },
-  released: { word: 'Released', tone: 'petrol' },
+  initiator: { word: zonesSheet.inShutdownInitiatorOpen, tone: 'plum' },
+  keep_alive_lost: { word: zonesSheet.inShutdownKeepAlive, tone: 'rust' },
+  power_lost: { word: zonesSheet.inShutdownPowerGone, tone: 'rust' },
+  released: { word: zonesSheet.released, tone: 'petrol' },
 };
 
 function InForce({ inForce }: Pick<CommandNow, 'inForce'>) {
@@ -38,23 +38,29 @@ export function ZonesSheet({
   const columns: Column<ZoneNow>[] = [
     {
       key: 'zone',
-      label: 'Zone',
+      label: zonesSheet.zone,
       cell: (zone) => (
         <>
           <span className="font-semibold">{zone.name}</span>
-          <span className="block text-sm text-ink-2">{counted(zone.strings.length, 'string')}</span>
+          <span className="block text-sm text-ink-2">
+            {zonesSheet.countedStringsString(zone.strings.length)}
+          </span>
         </>
       ),
     },
     {
       key: 'force',
-      label: 'In force',
+      label: zonesSheet.inForce,
       cell: (zone) => (
         <div className="space-y-1">
-          {zone.command ? <InForce inForce={zone.command.inForce} /> : <span>not reported yet</span>}
+          {zone.command ? (
+            <InForce inForce={zone.command.inForce} />
+          ) : (
+            <span>{zonesSheet.notReportedYet}</span>
+          )}
           {zone.transmitters.map((t) => (
             <p key={t.where} className="text-sm">
-              Transmitter {t.where}: {WORDS[t.inForce].word.toLowerCase()} since{' '}
+              {zonesSheet.transmitterSince(t.where, WORDS[t.inForce].word)}
               <SiteTime at={t.since} now={now} timeZone={timeZone} zone={named} />
             </p>
           ))}
@@ -63,7 +69,7 @@ export function ZonesSheet({
     },
     {
       key: 'since',
-      label: 'Since, by',
+      label: zonesSheet.sinceBy,
       cell: (zone) =>
         zone.command ? (
           <>
@@ -76,7 +82,7 @@ export function ZonesSheet({
     },
     {
       key: 'initiator',
-      label: 'Initiator',
+      label: zonesSheet.initiator,
       from: 'sm',
       cell: (zone) => (
         <>
@@ -87,18 +93,13 @@ export function ZonesSheet({
     },
   ];
   return (
-    <Sheet
-      id="zones"
-      flush
-      title="What is commanded"
-      aside="as the logger reports it; Wakeline switches nothing"
-    >
+    <Sheet id="zones" flush title={zonesSheet.whatIsCommanded} aside={zonesSheet.asTheLoggerReports}>
       <Table
-        caption="Zones and the command in force in each"
+        caption={zonesSheet.zonesAndTheCommand}
         columns={columns}
         rows={zones}
         rowKey={(zone) => zone.name}
-        empty={<Notice kind="empty" title="No zone is entered for this site" />}
+        empty={<Notice kind="empty" title={zonesSheet.noZoneIsEntered} />}
       />
     </Sheet>
   );

@@ -1,11 +1,12 @@
 import { countInside, subject, total, WHAT_TO_DO } from '../../components/causes/finding';
 import { GRAVITY } from '../../components/causes/words';
-import { countAtStart, number, power } from '../../drawings/numbers';
+import { number, power } from '../../drawings/numbers';
 import { clockOrDate } from '../../drawings/times';
 import type { CauseNow, SiteNow } from '../../schemas/api/now';
+import { siteFindingWords } from '../../words/site';
 
 const of = (n: number, all: number): string =>
-  n === all && all > 1 ? `All ${number(all)} units` : `${countAtStart(n)} of ${number(all)} units`;
+  n === all && all > 1 ? siteFindingWords.allUnits(all) : siteFindingWords.ofUnits(n, all);
 
 function headingOf(verdict: CauseNow['verdict'], causes: readonly CauseNow[], site: SiteNow): string {
   const sum = total(causes);
@@ -16,22 +17,22 @@ function headingOf(verdict: CauseNow['verdict'], causes: readonly CauseNow[], si
   const single = sum.units + sum.strings === 1;
   switch (verdict) {
     case 'not_shutting_down':
-      return `${who} did not shut down`;
+      return siteFindingWords.didNotShutDown(who);
     case 'stuck':
       return sum.units === 0
-        ? `${who} ${single ? 'has' : 'have'} units stuck in shutdown`
-        : `${who} ${single ? 'is' : 'are'} stuck in shutdown`;
+        ? siteFindingWords.unitsStuckInShutdown(who, single)
+        : siteFindingWords.stuckInShutdown(who, single);
     case 'unconfirmed':
-      return `The shutdown of ${who.charAt(0).toLowerCase()}${who.slice(1)} can't be confirmed`;
+      return siteFindingWords.theShutdownOfCant(who.charAt(0), who.slice(1));
     case 'silent':
-      return `${who} ${single ? 'is' : 'are'} silent`;
+      return siteFindingWords.whoSingleSilent(who, single);
   }
 }
 
 const making = ({ power: watts, acPowerMax }: SiteNow): string =>
   watts === null
-    ? 'What the inverters make is not known just now.'
-    : `The inverters make ${power(watts)} of ${power(acPowerMax)}.`;
+    ? siteFindingWords.whatTheInvertersMake
+    : siteFindingWords.theInvertersMakeOf(watts, acPowerMax);
 
 /** What holds at a site, as a heading, and what follows. Times in the site's zone. */
 export function siteFinding(
@@ -49,46 +50,45 @@ export function siteFinding(
         causes.filter((c) => c.verdict === worst),
         site,
       ),
-      sentence: `${WHAT_TO_DO[worst]('here')} ${making(site)}`,
+      sentence: `${WHAT_TO_DO[worst](siteFindingWords.here)} ${making(site)}`,
     };
   if (!site.loggerConnected)
     return {
       heading: site.reportedAt
-        ? `Nothing has been reported since ${at(site.reportedAt)}`
-        : 'Nothing has been reported yet',
-      sentence: 'The logger is not connected. What is shown is what it said last; nothing newer is known.',
+        ? siteFindingWords.nothingHasBeenReported(at(site.reportedAt))
+        : siteFindingWords.nothingHasBeenReportedYet,
+      sentence: siteFindingWords.theLoggerIsNot,
     };
   if (site.inShutdownSince)
     return {
-      heading: `In shutdown since ${at(site.inShutdownSince)}, on command`,
-      sentence: `${number(counts.shutdown)} of ${number(counts.units)} units say that they are in shutdown. A home run is dead only when a rated meter shows it.`,
+      heading: siteFindingWords.inShutdownSinceOn(at(site.inShutdownSince)),
+      sentence: siteFindingWords.ofUnitsSayThat(counts.shutdown, counts.units),
     };
   if (site.stage === 'commissioning' && counts.unheard > 0)
     return {
-      heading: `${number(counts.units - counts.unheard)} of ${number(counts.units)} units have answered the roll call`,
-      sentence: 'Until the roll call is complete, treat every string as live.',
+      heading: siteFindingWords.ofUnitsHaveAnswered(counts.units, counts.unheard),
+      sentence: siteFindingWords.untilTheRollCall,
     };
   if (counts.units > 0 && counts.dark === counts.units)
     return {
-      heading: `All ${number(counts.units)} units are in the dark`,
-      sentence:
-        'Too little light reaches the modules to power their units. The strings are live again at sunrise.',
+      heading: siteFindingWords.allUnitsAreIn(counts.units),
+      sentence: siteFindingWords.tooLittleLightReaches,
     };
   if (counts.units > 0 && counts.passing === counts.units)
     return {
-      heading: `All ${number(counts.units)} units pass`,
-      sentence: `${making(site)} Nothing needs attention.`,
+      heading: siteFindingWords.allUnitsPass(counts.units),
+      sentence: siteFindingWords.nothingNeedsAttention(making(site)),
     };
   const rest = [
-    counts.dark > 0 ? `${countInside(counts.dark)} in the dark` : '',
-    counts.unheard > 0 ? `${countInside(counts.unheard)} not heard yet` : '',
-    counts.shutdown > 0 ? `${countInside(counts.shutdown)} in shutdown` : '',
+    counts.dark > 0 ? siteFindingWords.inTheDark(countInside(counts.dark)) : '',
+    counts.unheard > 0 ? siteFindingWords.notHeardYet(countInside(counts.unheard)) : '',
+    counts.shutdown > 0 ? siteFindingWords.inShutdown(countInside(counts.shutdown)) : '',
   ].filter(Boolean);
   return {
     heading:
       counts.passing > 0
-        ? `${number(counts.passing)} of ${number(counts.units)} units pass`
-        : 'Nothing needs attention',
-    sentence: `${rest.length > 0 ? `Of the others ${rest.join(', ')}. ` : ''}${making(site)}`,
+        ? siteFindingWords.ofUnitsPass(counts.passing, counts.units)
+        : siteFindingWords.nothingNeedsAttention2,
+    sentence: `${rest.length > 0 ? siteFindingWords.ofTheOthers(rest.join(', ')) : ''}${making(site)}`,
   };
 }

@@ -1,6 +1,7 @@
 import { Choice } from '../../components/ui/Choice';
 import type { StringPage } from '../../schemas/api/string';
 import type { WorkbenchView } from '../../schemas/api/workbench';
+import { compareControls } from '../../words/string-history';
 
 interface Props {
   page: StringPage;
@@ -18,28 +19,31 @@ export function CompareControls({ page, view, today, onChange }: Props) {
     <div className="no-print mb-2 flex flex-wrap items-center gap-x-4 gap-y-1">
       <Choice
         inline
-        label="Siblings"
+        label={compareControls.siblings}
         value={view.siblings}
         disabled={page.siblings.length === 0}
         options={[
-          { value: 'middle', label: page.siblings.length === 0 ? 'none on this plane' : 'their middle' },
-          { value: 'each', label: `each of ${page.siblings.length}` },
-          { value: 'off', label: 'not shown' },
+          {
+            value: 'middle',
+            label: page.siblings.length === 0 ? compareControls.noneOnThisPlane : compareControls.theirMiddle,
+          },
+          { value: 'each', label: compareControls.eachOf(page.siblings.length) },
+          { value: 'off', label: compareControls.notShown },
         ]}
         onChange={(siblings) => onChange({ siblings: siblings as WorkbenchView['siblings'] })}
       />
       <Choice
         inline
-        label="Lay over"
+        label={compareControls.layOver}
         value={view.beside}
         options={[
-          { value: '', label: 'no string' },
-          ...others.map((s) => ({ value: s.id, label: `string ${s.name}` })),
+          { value: '', label: compareControls.noString },
+          ...others.map((s) => ({ value: s.id, label: compareControls.stringName(s.name) })),
         ]}
         onChange={(beside) => onChange({ beside, day: '', ...(beside === '' ? { difference: '' } : {}) })}
       />
       <label className="flex items-center gap-2 text-sm text-ink-2">
-        or the day
+        {compareControls.orTheDay}
         <input
           type="date"
           value={view.day}
@@ -63,7 +67,7 @@ export function CompareControls({ page, view, today, onChange }: Props) {
           onChange={(event) => onChange({ difference: event.target.checked ? 'yes' : '' })}
           className="h-5 w-5 accent-[var(--ink)]"
         />
-        Difference
+        {compareControls.difference}
       </label>
     </div>
   );

@@ -1,5 +1,6 @@
 import { useState } from 'react';
 import { Button } from '../../components/ui/Button';
+import { copyLink } from '../../words/strings';
 
 /** Copies the address of exactly this view; where the browser keeps the clipboard shut, shows it to be copied by hand. */
 export function CopyLink({ address }: { address: () => string }) {
@@ -14,16 +15,16 @@ export function CopyLink({ address }: { address: () => string }) {
   };
   return (
     <span className="inline-flex flex-wrap items-center gap-2">
-      <Button onClick={copy}>{shown?.copied ? 'Link copied' : 'Copy link'}</Button>
+      <Button onClick={copy}>{shown?.copied ? copyLink.linkCopied : copyLink.copyLink}</Button>
       <span role="status" className={shown && !shown.copied ? '' : 'sr-only'}>
         {shown &&
           (shown.copied ? (
-            'The link to exactly this view is on the clipboard.'
+            copyLink.theLinkToExactly
           ) : (
             <input
               readOnly
               value={shown.url}
-              aria-label="Link to this view"
+              aria-label={copyLink.linkToThisView}
               onFocus={(event) => event.target.select()}
               className="target w-[260px] rounded border border-rule bg-sheet px-2 text-sm text-ink"
             />

@@ -2,6 +2,7 @@ import { Sheet } from '../../components/ui/Sheet';
 import { SiteTime } from '../../components/ui/Time';
 import { eventWords, type EventTone } from '../../domain/verdicts/event-words';
 import type { StringPage } from '../../schemas/api/string';
+import { eventsSheet } from '../../words/strings';
 
 const MARK: Record<EventTone, { shape: string; colour: string }> = {
   crimson: { shape: '◆', colour: 'text-crimson' },
@@ -16,9 +17,9 @@ const SHOWN = 8;
 export function EventsSheet({ page }: { page: StringPage }) {
   const { events, site } = page;
   return (
-    <Sheet id="events" title="What happened" aside="14 days">
+    <Sheet id="events" title={eventsSheet.whatHappened} aside={eventsSheet.n14Days}>
       {events.length === 0 ? (
-        <p className="text-ink-2">Nothing out of the ordinary.</p>
+        <p className="text-ink-2">{eventsSheet.nothingOutOfThe}</p>
       ) : (
         <ul className="space-y-2">
           {events.slice(0, SHOWN).map((event) => {

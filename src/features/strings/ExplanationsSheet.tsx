@@ -3,23 +3,23 @@ import { NotRead } from '../../components/ui/NotRead';
 import { Sheet } from '../../components/ui/Sheet';
 import { Tag, type Tone } from '../../components/ui/Tag';
 import { DayRatios } from '../../drawings/DayRatios';
-import { number, percent, quantity } from '../../drawings/numbers';
-import { shortDate } from '../../drawings/times';
+import { percent, quantity } from '../../drawings/numbers';
 import type { StringPage } from '../../schemas/api/string';
 import type { ExplanationFit, StringExplanations, WorkbenchView } from '../../schemas/api/workbench';
 import { paths } from '../../schemas/paths';
 import { explanationsQuery } from './queries';
+import { explanationsSheet } from '../../words/strings';
 
 const FIT: Record<ExplanationFit['fit'], { word: string; tone: Tone; shape: string }> = {
-  fits: { word: 'Fits', tone: 'rust', shape: '▼' },
-  partly: { word: 'In part', tone: 'plain', shape: '◐' },
-  cant_tell: { word: 'Can’t tell', tone: 'outline', shape: '?' },
-  does_not: { word: 'Does not fit', tone: 'slate', shape: '–' },
+  fits: { word: explanationsSheet.fits, tone: 'rust', shape: '▼' },
+  partly: { word: explanationsSheet.inPart, tone: 'plain', shape: '◐' },
+  cant_tell: { word: explanationsSheet.cantTell, tone: 'outline', shape: '?' },
+  does_not: { word: explanationsSheet.doesNotFit, tone: 'slate', shape: '–' },
 };
 const HEADING: Record<NonNullable<StringExplanations['outcome']>, string> = {
-  low: 'It makes less than it should',
-  as_expected: 'It makes what it should',
-  cant_tell: 'Whether it makes what it should can’t be told',
+  low: explanationsSheet.itMakesLessThan,
+  as_expected: explanationsSheet.itMakesWhatIt,
+  cant_tell: explanationsSheet.whetherItMakesWhat,
 };
 
 function Explanation({ of }: { of: ExplanationFit }) {
@@ -44,9 +44,9 @@ function Explanation({ of }: { of: ExplanationFit }) {
         <table className="mt-1 w-full border-collapse text-sm sm:w-auto">
           <thead className="sr-only">
             <tr>
-              <th scope="col">Figure</th>
-              <th scope="col">Measured</th>
-              <th scope="col">If it were so</th>
+              <th scope="col">{explanationsSheet.figure}</th>
+              <th scope="col">{explanationsSheet.measured}</th>
+              <th scope="col">{explanationsSheet.ifItWereSo}</th>
             </tr>
           </thead>
           <tbody>
@@ -56,7 +56,7 @@ function Explanation({ of }: { of: ExplanationFit }) {
                   {f.name}
                 </th>
                 <td className="py-0.5 pr-4 text-right font-medium">{f.measured}</td>
-                <td className="py-0.5 text-left text-ink-2">would be {f.would}</td>
+                <td className="py-0.5 text-left text-ink-2">{explanationsSheet.wouldBe(f.would)}</td>
               </tr>
             ))}
           </tbody>
@@ -73,20 +73,20 @@ export default function ExplanationsSheet({ page, view }: { page: StringPage; vi
   return (
     <Sheet
       id="explanations"
-      title="Which explanation fits"
+      title={explanationsSheet.whichExplanationFits}
       aside={
         data?.day
-          ? `judged after ${shortDate(`${data.day}T12:00:00Z`, 'UTC')}`
-          : data && 'no night judged yet'
+          ? explanationsSheet.judgedAfterShortDateDay(data.day)
+          : data && explanationsSheet.noNightJudgedYet
       }
     >
       <NotRead
         error={found.error}
-        title="The judgement could not be fetched"
+        title={explanationsSheet.theJudgementCouldNot}
         kind="failed"
         onRetry={() => found.refetch()}
       />
-      {found.isPending && <p role="status">Holding the explanations against the figures …</p>}
+      {found.isPending && <p role="status">{explanationsSheet.holdingTheExplanationsAgainst}</p>}
       {data && (
         <>
           <div className="grid gap-x-6 gap-y-3 md:grid-cols-[minmax(0,1fr)_minmax(0,420px)]">
@@ -95,22 +95,23 @@ export default function ExplanationsSheet({ page, view }: { page: StringPage; vi
               <p className="mt-0.5 text-sm text-ink-2">{data.words}</p>
               {data.lossKWh && (
                 <p className="mt-2">
-                  <strong>{quantity(data.lossKWh.value, 'kWh', 1)}</strong> missing over these{' '}
-                  {data.days.length} days, 9 times in 10 between {number(data.lossKWh.low, 1)} and{' '}
-                  {number(data.lossKWh.high, 1)}.
+                  <strong>{quantity(data.lossKWh.value, 'kWh', 1)}</strong>
+                  {explanationsSheet.missingOverTheseDays(
+                    data.days.length,
+                    data.lossKWh.low,
+                    data.lossKWh.high,
+                  )}
                 </p>
               )}
               {data.method === 'model' && (
-                <p className="mt-2 text-sm text-ink-2">
-                  Fewer than five strings like it lie on this plane: held against the model, with a wide band.
-                </p>
+                <p className="mt-2 text-sm text-ink-2">{explanationsSheet.fewerThanFiveStrings}</p>
               )}
             </div>
             {data.days.length > 0 && data.threshold && (
               <figure>
                 <DayRatios days={data.days} limit={data.threshold.ratio} />
                 <figcaption className="text-xs text-ink-3">
-                  Made of what was expected, day by day; dashed: the limit ({data.threshold.source}).
+                  {explanationsSheet.madeOfWhatWas(data.threshold.source)}
                 </figcaption>
               </figure>
             )}
@@ -121,9 +122,9 @@ export default function ExplanationsSheet({ page, view }: { page: StringPage; vi
             ))}
           </ul>
           <p className="mt-2 text-xs text-ink-3">
-            How each is told:{' '}
+            {explanationsSheet.howEachIsTold}
             <a className="text-petrol underline underline-offset-2" href={paths.methods()}>
-              notes on the methods
+              {explanationsSheet.notesOnTheMethods}
             </a>
             .
           </p>

@@ -7,17 +7,17 @@ import { NotRead } from '../../components/ui/NotRead';
 import { Segmented } from '../../components/ui/Segmented';
 import { Sheet } from '../../components/ui/Sheet';
 import { withQuery } from '../../lib/api';
-import { longDate } from '../../drawings/times';
 import type { StringPage, UnitQuantity } from '../../schemas/api/string';
 import type { StringHeat, WorkbenchView } from '../../schemas/api/workbench';
 import { paths } from '../../schemas/paths';
 import { heatQuery } from './queries';
+import { heatSheet } from '../../words/string-history';
 
 const QUANTITIES: readonly { value: UnitQuantity; label: string }[] = [
-  { value: 'voltage', label: 'Voltage' },
-  { value: 'current', label: 'Current' },
-  { value: 'temperature', label: 'Temperature' },
-  { value: 'power', label: 'Power' },
+  { value: 'voltage', label: heatSheet.voltage },
+  { value: 'current', label: heatSheet.current },
+  { value: 'temperature', label: heatSheet.temperature },
+  { value: 'power', label: heatSheet.power },
 ];
 const DIGITS: Record<UnitQuantity, number> = { voltage: 1, current: 2, temperature: 0, power: 0 };
 /** Below this the middle of a step says nothing: dusk. */
@@ -48,7 +48,7 @@ export default function HeatSheet({ page, view, onView, moment, onChoose }: Prop
   const model = useMemo((): HeatModel | null => {
     if (!heat.data) return null;
     return {
-      title: `${page.site.name}, string ${string.name}: ${heat.data.quantity} of every unit`,
+      title: heatSheet.stringOfEveryUnit(page.site.name, string.name, heat.data.quantity),
       unit: heat.data.unit,
       digits: DIGITS[heat.data.quantity],
       timeZone: heat.data.timeZone,
@@ -62,20 +62,20 @@ export default function HeatSheet({ page, view, onView, moment, onChoose }: Prop
   return (
     <Sheet
       id="heat"
-      title="Every unit over the day"
+      title={heatSheet.everyUnitOverThe}
       aside={
         <div className="flex flex-wrap items-center gap-x-4">
           <Segmented
-            label="Quantity of the strip"
+            label={heatSheet.quantityOfTheStrip}
             options={QUANTITIES}
             value={view.heat}
             onChange={(quantity) => onView({ heat: quantity })}
           />
           <Segmented
-            label="Scale of the strip"
+            label={heatSheet.scaleOfTheStrip}
             options={[
-              { value: 'middle', label: 'Against the middle' },
-              { value: 'figures', label: 'Figures' },
+              { value: 'middle', label: heatSheet.againstTheMiddle },
+              { value: 'figures', label: heatSheet.figures },
             ]}
             value={view.scale}
             onChange={(scale) => onView({ scale })}
@@ -85,22 +85,21 @@ export default function HeatSheet({ page, view, onView, moment, onChoose }: Prop
     >
       <NotRead
         error={heat.error}
-        title="The day could not be fetched"
+        title={heatSheet.theDayCouldNot}
         kind="failed"
         onRetry={() => heat.refetch()}
       />
-      {heat.isPending && <p role="status">Fetching the day of every unit …</p>}
+      {heat.isPending && <p role="status">{heatSheet.fetchingTheDayOf}</p>}
       {model && heat.data && (
         <>
           <p className="mb-2 text-sm text-ink-2">
-            {longDate(heat.data.from * 1000, heat.data.timeZone)}, positions downward, means of{' '}
-            {heat.data.stepS / 60} minutes
-            {heat.data.side === 'module' && heat.data.quantity === 'voltage' && ', module side'}. A tap shows
-            the staircase of that moment and the unit’s line.
+            {heatSheet.positionsDownwardMeansOf(heat.data.from, heat.data.timeZone, heat.data.stepS)}
+            {heat.data.side === 'module' && heat.data.quantity === 'voltage' && heatSheet.moduleSide}
+            {heatSheet.aTapShowsThe}
           </p>
           {model.at.length === 0 ? (
-            <Notice kind="empty" title="No unit reported on this day">
-              Choose another day in the history above.
+            <Notice kind="empty" title={heatSheet.noUnitReportedOn}>
+              {heatSheet.chooseAnotherDayIn}
             </Notice>
           ) : (
             <HeatStrip

@@ -13,22 +13,23 @@ import { differenceChart, historyChart, refined, type Overlay } from './history-
 import { MomentBar } from './MomentBar';
 import { historyCsvHref, historyQuery, type HistoryView, type Part } from './queries';
 import { shifted } from './view';
+import { historySheet } from '../../words/string-history';
 
 const RANGES: readonly { value: HistoryRange; label: string }[] = [
-  { value: 'day', label: 'Day' },
-  { value: 'week', label: 'Week' },
-  { value: 'month', label: 'Month' },
-  { value: 'year', label: 'Year' },
+  { value: 'day', label: historySheet.day },
+  { value: 'week', label: historySheet.week },
+  { value: 'month', label: historySheet.month },
+  { value: 'year', label: historySheet.year },
 ];
 const QUANTITIES: readonly { value: HistoryQuantity; label: string }[] = [
-  { value: 'voltage', label: 'Voltage' },
-  { value: 'current', label: 'Current' },
-  { value: 'power', label: 'Power' },
+  { value: 'voltage', label: historySheet.voltage },
+  { value: 'current', label: historySheet.current },
+  { value: 'power', label: historySheet.power },
 ];
 const TITLE: Record<HistoryQuantity, string> = {
-  voltage: 'String voltage',
-  current: 'String current',
-  power: 'String power',
+  voltage: historySheet.stringVoltage,
+  current: historySheet.stringCurrent,
+  power: historySheet.stringPower,
 };
 const STEP_DAYS: Record<HistoryRange, number> = { day: 1, week: 7, month: 31, year: 365 };
 /** A part smaller than this share of the range is worth fetching more finely. */
@@ -38,7 +39,7 @@ function rangeInWords(history: StringHistory): string {
   const last = (history.to - 1) * 1000;
   if (history.range === 'day') return longDate(last, history.timeZone);
   const first = history.range === 'year' ? longDate : shortDate;
-  return `${first(history.from * 1000, history.timeZone)} to ${longDate(last, history.timeZone)}`;
+  return historySheet.firstToLast(first(history.from * 1000, history.timeZone), last, history.timeZone);
 }
 
 interface Props {
@@ -79,7 +80,7 @@ function useOverlay(page: StringPage, view: WorkbenchView): { overlay: Overlay |
     return {
       overlay:
         string.data && !string.isPlaceholderData
-          ? { name: `String ${other?.name ?? ''}`, history: string.data }
+          ? { name: historySheet.stringOther(other?.name), history: string.data }
           : null,
       error: string.error,
     };
@@ -95,7 +96,7 @@ function useOverlay(page: StringPage, view: WorkbenchView): { overlay: Overlay |
 /** The string over a day, week, month or year: measured, expected, siblings, and what is laid over it. */
 export function HistorySheet({ page, view, onView, initial, initialView, notes, moment, onMoment }: Props) {
   const { id } = page.string;
-  const subject = `${page.site.name}, string ${page.string.name}`;
+  const subject = historySheet.siteStringWhich(page.site.name, page.string.name);
   const [part, setPart] = useState<Part | null>(null);
   const shownView = asHistory(view);
   const first = JSON.stringify(shownView) === JSON.stringify(asHistory(initialView));
@@ -153,13 +154,13 @@ export function HistorySheet({ page, view, onView, initial, initialView, notes, 
       aside={
         <div className="flex flex-wrap items-center gap-x-4">
           <Segmented
-            label="Quantity"
+            label={historySheet.quantity}
             options={QUANTITIES}
             value={view.quantity}
             onChange={(quantity) => show({ quantity })}
           />
           <Segmented
-            label="Range"
+            label={historySheet.range}
             options={RANGES}
             value={view.range}
             onChange={(range) => show({ range })}
@@ -169,12 +170,12 @@ export function HistorySheet({ page, view, onView, initial, initialView, notes, 
     >
       <NotRead
         error={whole.error}
-        title="The history could not be fetched"
+        title={historySheet.theHistoryCouldNot}
         kind="failed"
         onRetry={() => whole.refetch()}
       />
       <CompareControls page={page} view={view} today={today} onChange={show} />
-      <NotRead error={overlayError} title="What should be laid over it could not be fetched" kind="failed" />
+      <NotRead error={overlayError} title={historySheet.whatShouldBeLaid} kind="failed" />
       <div aria-busy={whole.isFetching} className={whole.isPlaceholderData ? 'opacity-60' : ''}>
         <TimeChart
           key={`${view.quantity} ${from} ${to}`}
@@ -190,7 +191,7 @@ export function HistorySheet({ page, view, onView, initial, initialView, notes, 
               <button
                 type="button"
                 className="target px-2 text-ink-2 hover:text-ink"
-                aria-label="Earlier"
+                aria-label={historySheet.earlier}
                 onClick={() => step(-STEP_DAYS[view.range])}
               >
                 ←
@@ -201,14 +202,14 @@ export function HistorySheet({ page, view, onView, initial, initialView, notes, 
               <button
                 type="button"
                 className="target px-2 text-ink-2 hover:text-ink disabled:opacity-40"
-                aria-label="Later"
+                aria-label={historySheet.later}
                 disabled={view.on === ''}
                 onClick={() => step(STEP_DAYS[view.range])}
               >
                 →
               </button>
               <label>
-                <span className="sr-only">Last day shown</span>
+                <span className="sr-only">{historySheet.lastDayShown}</span>
                 <input
                   type="date"
                   value={last}
@@ -235,14 +236,12 @@ export function HistorySheet({ page, view, onView, initial, initialView, notes, 
           onMoment={onMoment}
         />
       ) : (
-        <p className="mt-2 text-sm text-ink-2">
-          A year shows days. For the staircase of a minute choose a day, a week or a month.
-        </p>
+        <p className="mt-2 text-sm text-ink-2">{historySheet.aYearShowsDays}</p>
       )}
       {difference && overlay && (
         <div className="mt-4 border-t border-rule-faint pt-3">
           <h3 className="text-sm font-medium">
-            {page.string.name} less {overlay.name}
+            {historySheet.whichLessOverlay(page.string.name, overlay.name)}
           </h3>
           <TimeChart
             key={`less ${view.quantity} ${from} ${to}`}
@@ -252,10 +251,12 @@ export function HistorySheet({ page, view, onView, initial, initialView, notes, 
           />
         </div>
       )}
-      {empty && !whole.isFetching && <p className="text-sm text-ink-2">Nothing was reported in this time.</p>}
+      {empty && !whole.isFetching && (
+        <p className="text-sm text-ink-2">{historySheet.nothingWasReportedIn}</p>
+      )}
       <div className="mt-1 space-y-1 text-sm text-ink-2">
-        {history.expected.from && <p>Band: expected nine times in ten, from {history.expected.from}.</p>}
-        {overlay && <p>Dashed: {overlay.name}.</p>}
+        {history.expected.from && <p>{historySheet.bandExpectedNineTimes(history.expected.from)}</p>}
+        {overlay && <p>{historySheet.dashedOverlay(overlay.name)}</p>}
         {history.notes.map((note) => (
           <p key={note}>{note}</p>
         ))}

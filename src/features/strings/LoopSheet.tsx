@@ -11,6 +11,7 @@ import type { StringPage } from '../../schemas/api/string';
 import type { StringLoop, WorkbenchView } from '../../schemas/api/workbench';
 import { paths } from '../../schemas/paths';
 import { loopQuery } from './queries';
+import { loopSheet } from '../../words/string-history';
 
 const day = (text: string): string => shortDate(`${text}T12:00:00Z`, 'UTC');
 
@@ -20,20 +21,20 @@ function PointsTable({ loop }: { loop: StringLoop }) {
       className="max-h-[330px] overflow-auto"
       tabIndex={0}
       role="region"
-      aria-label="Points of the resistance, figures"
+      aria-label={loopSheet.pointsOfTheResistance}
     >
       <table className="w-full border-collapse text-right">
-        <caption className="sr-only">Sum of the units less the input over the current</caption>
+        <caption className="sr-only">{loopSheet.sumOfTheUnits}</caption>
         <thead className="sticky top-0 bg-sheet text-sm text-ink-2">
           <tr className="border-b border-rule">
             <th scope="col" className="py-1.5 pr-4 text-left font-medium">
-              Time
+              {loopSheet.time}
             </th>
             <th scope="col" className="py-1.5 pl-3 font-medium">
-              Current, A
+              {loopSheet.currentA}
             </th>
             <th scope="col" className="py-1.5 pl-3 font-medium">
-              Sum less input, V
+              {loopSheet.sumLessInputV}
             </th>
           </tr>
         </thead>
@@ -57,22 +58,14 @@ function Figures({ loop }: { loop: StringLoop }) {
   const { fit } = loop;
   if (!fit) return null;
   const rows: [string, string][] = [
-    [
-      'Resistance',
-      `${quantity(fit.ohm, 'Ω', 3)}, 19 times in 20 from ${number(fit.low, 3)} to ${number(fit.high, 3)}`,
-    ],
-    ['Cable by the as-built', quantity(loop.cableOhm, 'Ω', 3)],
-    [
-      'Heat of all of it',
-      `${quantity(fit.ohm * fit.highestA ** 2, 'W')} at ${quantity(fit.highestA, 'A', 1)}`,
-    ],
-    ['Gain error taken out', percent(fit.gain, 2)],
+    [loopSheet.resistance, loopSheet.timesInFromTo(fit.ohm, fit.low, fit.high)],
+    [loopSheet.cableByTheAs, quantity(loop.cableOhm, 'Ω', 3)],
+    [loopSheet.heatOfAllOf, loopSheet.ohmAtHighestA(fit.ohm, fit.highestA)],
+    [loopSheet.gainErrorTakenOut, percent(fit.gain, 2)],
     ...(fit.sharedOhm === null
       ? []
-      : [
-          ['Shared with the other strings of the input', quantity(fit.sharedOhm, 'Ω', 3)] as [string, string],
-        ]),
-    ['Samples', number(fit.samples)],
+      : [[loopSheet.sharedWithTheOther, quantity(fit.sharedOhm, 'Ω', 3)] as [string, string]]),
+    [loopSheet.samples, number(fit.samples)],
   ];
   return (
     <dl className="mt-2 grid gap-x-6 gap-y-1 text-sm sm:grid-cols-[auto_1fr]">
@@ -94,16 +87,16 @@ export default function LoopSheet({ page, view }: { page: StringPage; view: Work
   return (
     <Sheet
       id="loop"
-      title="Units against the input: resistance of the loop"
-      aside={data && `${day(data.fromDay)} to ${day(data.day)}`}
+      title={loopSheet.unitsAgainstTheInput}
+      aside={data && loopSheet.fromDayToDay(day(data.fromDay), day(data.day))}
     >
       <NotRead
         error={loop.error}
-        title="The samples could not be fetched"
+        title={loopSheet.theSamplesCouldNot}
         kind="failed"
         onRetry={() => loop.refetch()}
       />
-      {loop.isPending && <p role="status">Fetching three days of reports …</p>}
+      {loop.isPending && <p role="status">{loopSheet.fetchingThreeDaysOf}</p>}
       {data && (
         <>
           <p className="font-medium">{data.words}</p>
@@ -111,7 +104,7 @@ export default function LoopSheet({ page, view }: { page: StringPage; view: Work
             <>
               <div className="no-print mb-1 mt-2 flex justify-end gap-2">
                 <Button className="!px-3" aria-pressed={asTable} onClick={() => setAsTable(!asTable)}>
-                  {asTable ? 'Points' : 'Table'}
+                  {asTable ? loopSheet.points : loopSheet.table}
                 </Button>
                 <ButtonLink
                   className="!px-3"
@@ -139,13 +132,10 @@ export default function LoopSheet({ page, view }: { page: StringPage; view: Work
           )}
           <Figures loop={data} />
           {data.couldBe.length > 0 && (
-            <p className="mt-2 text-sm text-ink-2">It could be {listed(data.couldBe)}.</p>
+            <p className="mt-2 text-sm text-ink-2">{loopSheet.itCouldBe(listed(data.couldBe))}</p>
           )}
           <p className="mt-2 text-xs text-ink-3">
-            Each point: the sum of all unit outputs less the input’s voltage, gain errors taken out, over the
-            string’s own current. The slope is the resistance of connectors and leads between them; the shaded
-            wedge holds it 19 times in 20. Limit: {number(data.threshold.ohm, 1)} Ω ({data.threshold.source}).
-            Connectors on the module side lie outside: no finding is not proof.
+            {loopSheet.eachPointTheSum(data.threshold.ohm, data.threshold.source)}
           </p>
         </>
       )}

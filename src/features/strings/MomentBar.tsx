@@ -1,5 +1,6 @@
 import { Button } from '../../components/ui/Button';
 import { clock, shortDate } from '../../drawings/times';
+import { momentBar } from '../../words/strings';
 
 interface Props {
   from: number;
@@ -24,21 +25,21 @@ export function MomentBar({ from, to, now, stepS, moment, timeZone, onMoment }: 
   const outside = moment !== null && (moment < from || moment > to);
   const words =
     moment === null
-      ? 'now'
-      : `${clock(moment * 1000, timeZone)}, ${shortDate(moment * 1000, timeZone)}${outside ? ', outside of what is shown' : ''}`;
+      ? momentBar.now
+      : `${clock(moment * 1000, timeZone)}, ${shortDate(moment * 1000, timeZone)}${outside ? momentBar.outsideOfWhatIs : ''}`;
   const go = (by: number) => onMoment(Math.min(now, Math.max(1_500_000_000, (moment ?? max) + by)), true);
   if (max <= min) return null;
   return (
     <div className="no-print mt-2 flex flex-wrap items-center gap-x-3 gap-y-1">
       <label className="flex min-w-[200px] flex-1 items-center gap-3 text-sm text-ink-2">
-        <span className="whitespace-nowrap">Staircase at</span>
+        <span className="whitespace-nowrap">{momentBar.staircaseAt}</span>
         <input
           type="range"
           min={min}
           max={max}
           step={stepS}
           value={value}
-          aria-label="Moment of the staircase"
+          aria-label={momentBar.momentOfTheStaircase}
           aria-valuetext={words}
           onChange={(event) => onMoment(Number(event.target.value), false)}
           onPointerUp={(event) => onMoment(Number(event.currentTarget.value), true)}
@@ -49,13 +50,13 @@ export function MomentBar({ from, to, now, stepS, moment, timeZone, onMoment }: 
       <output className="min-w-[104px] text-sm font-medium">{words}</output>
       <div className="flex gap-1">
         <Button className="!px-3" onClick={() => go(-stepS)}>
-          −{stepS / 60} min
+          {momentBar.stepSMin(stepS)}
         </Button>
         <Button className="!px-3" disabled={moment === null} onClick={() => go(stepS)}>
-          +{stepS / 60} min
+          {momentBar.stepSMin2(stepS)}
         </Button>
         <Button className="!px-3" disabled={moment === null} onClick={() => onMoment(null, true)}>
-          Now
+          {momentBar.now2}
         </Button>
       </div>
     </div>

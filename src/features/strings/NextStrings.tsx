@@ -1,6 +1,7 @@
 import { ButtonLink } from '../../components/ui/Button';
 import type { StringPage } from '../../schemas/api/string';
 import { paths } from '../../schemas/paths';
+import { nextStrings } from '../../words/strings';
 
 /** To the strings beside it, in the order of their names. */
 export function NextStrings({ page }: { page: StringPage }) {
@@ -8,12 +9,15 @@ export function NextStrings({ page }: { page: StringPage }) {
   return (
     <>
       {previous && (
-        <ButtonLink href={paths.string(page.site.id, previous.id)} aria-label={`To string ${previous.name}`}>
+        <ButtonLink
+          href={paths.string(page.site.id, previous.id)}
+          aria-label={nextStrings.toString(previous.name)}
+        >
           <span aria-hidden="true">←</span> {previous.name}
         </ButtonLink>
       )}
       {next && (
-        <ButtonLink href={paths.string(page.site.id, next.id)} aria-label={`To string ${next.name}`}>
+        <ButtonLink href={paths.string(page.site.id, next.id)} aria-label={nextStrings.toString2(next.name)}>
           {next.name} <span aria-hidden="true">→</span>
         </ButtonLink>
       )}

@@ -13,6 +13,7 @@ import type { Annotation, NewAnnotation } from '../../schemas/api/annotations';
 import type { StringPage } from '../../schemas/api/string';
 import { paths } from '../../schemas/paths';
 import { notesQuery } from './queries';
+import { notesSheet } from '../../words/string-history';
 
 /** Epoch seconds as the field of a form has them, on the site's wall clock. */
 const typed = (atS: number, timeZone: string): string =>
@@ -43,7 +44,7 @@ function NoteForm({ page, atS, onDone }: { page: StringPage; atS: number; onDone
   const submit = (event: { preventDefault(): void }) => {
     event.preventDefault();
     const begin = instant(from, site.timeZone);
-    if (begin === null) return setLocal('Give the time of the note, day and hour.');
+    if (begin === null) return setLocal(notesSheet.giveTheTimeOf);
     setLocal(null);
     pin.mutate({
       ref,
@@ -57,7 +58,7 @@ function NoteForm({ page, atS, onDone }: { page: StringPage; atS: number; onDone
     <form onSubmit={submit} className="mb-4 grid gap-3 border border-rule p-3" noValidate>
       <div>
         <label htmlFor="note-text" className="mb-1 block font-medium">
-          Note
+          {notesSheet.note}
         </label>
         <textarea
           id="note-text"
@@ -77,39 +78,39 @@ function NoteForm({ page, atS, onDone }: { page: StringPage; atS: number; onDone
       </div>
       <div className="grid gap-3 sm:grid-cols-3">
         <Field
-          label="At"
+          label={notesSheet.at}
           type="datetime-local"
           value={from}
           onChange={(event) => setFrom(event.target.value)}
           error={local ?? error?.fault('from')}
         />
         <Field
-          label="To, for a span"
+          label={notesSheet.toForASpan}
           type="datetime-local"
           value={to}
           onChange={(event) => setTo(event.target.value)}
           error={error?.fault('to')}
         />
         <Choice
-          label="About"
+          label={notesSheet.about}
           value={of}
           options={[
-            { value: 'string', label: `string ${string.name}` },
-            { value: 'site', label: 'the whole site' },
+            { value: 'string', label: notesSheet.stringWhich(string.name) },
+            { value: 'site', label: notesSheet.theWholeSite },
           ]}
           onChange={(value) => setOf(value === 'site' ? 'site' : 'string')}
         />
       </div>
       {error && error.fields.length === 0 && (
-        <Notice kind="failed" title="The note was not pinned">
+        <Notice kind="failed" title={notesSheet.theNoteWasNot}>
           {error.message}
         </Notice>
       )}
       <div className="flex gap-2">
         <Button type="submit" weight="primary" disabled={pin.isPending}>
-          {pin.isPending ? 'Pinning …' : 'Pin the note'}
+          {pin.isPending ? notesSheet.pinning : notesSheet.pinTheNote}
         </Button>
-        <Button onClick={onDone}>Leave it</Button>
+        <Button onClick={onDone}>{notesSheet.leaveIt}</Button>
       </div>
     </form>
   );
@@ -143,11 +144,11 @@ export default function NotesSheet({ page, atS, onMoment }: Props) {
   return (
     <Sheet
       id="notes"
-      title="Notes on the time axis"
+      title={notesSheet.notesOnTheTime}
       aside={
         !writing && (
           <Button className="!px-3" onClick={() => setWriting(true)}>
-            Pin a note
+            {notesSheet.pinANote}
           </Button>
         )
       }
@@ -155,28 +156,24 @@ export default function NotesSheet({ page, atS, onMoment }: Props) {
       {writing && <NoteForm key={atS} page={page} atS={atS} onDone={() => setWriting(false)} />}
       <NotRead
         error={notes.error}
-        title="The notes could not be fetched"
+        title={notesSheet.theNotesCouldNot}
         kind="failed"
         onRetry={() => notes.refetch()}
       />
-      <NotRead error={change.error} title="The note stands as it was" kind="failed" />
+      <NotRead error={change.error} title={notesSheet.theNoteStandsAs} kind="failed" />
       {gone && (
         <p role="status" className="mb-2 flex flex-wrap items-center gap-3">
-          The note is taken away.
+          {notesSheet.theNoteIsTaken}
           <Button
             className="!px-3"
             disabled={change.isPending}
             onClick={() => change.mutate({ note: gone, back: true })}
           >
-            Put it back
+            {notesSheet.putItBack}
           </Button>
         </p>
       )}
-      {notes.data && list.length === 0 && (
-        <p className="text-ink-2">
-          None yet. Choose a moment in the history, then pin what is worth remembering.
-        </p>
-      )}
+      {notes.data && list.length === 0 && <p className="text-ink-2">{notesSheet.noneYetChooseA}</p>}
       <ul className="divide-y divide-rule-faint">
         {list.map((note) => (
           <li key={note.id} className="py-2.5">
@@ -189,20 +186,20 @@ export default function NotesSheet({ page, atS, onMoment }: Props) {
                 onClick={() => onMoment(Math.floor(Date.parse(note.from) / 1000))}
               >
                 {clockOrDate(note.from, page.at, site.timeZone)}
-                {note.to && ` to ${clockOrDate(note.to, page.at, site.timeZone)}`}
+                {note.to && notesSheet.toTo(note.to, page.at, site.timeZone)}
               </button>
-              <span>{note.string ? `string ${note.string.name}` : 'whole site'}</span>
+              <span>{note.string ? notesSheet.stringWhich(note.string.name) : notesSheet.wholeSite}</span>
               <span title={fullTime(note.at, site.timeZone)}>
                 {note.by}, {clockOrDate(note.at, page.at, site.timeZone)}
               </span>
               <button
                 type="button"
                 className="target ml-auto px-2 hover:text-ink hover:underline"
-                aria-label={`Take away the note “${note.text.slice(0, 40)}”`}
+                aria-label={notesSheet.takeAwayTheNote(note.text.slice(0, 40))}
                 disabled={change.isPending}
                 onClick={() => change.mutate({ note, back: false })}
               >
-                Take away
+                {notesSheet.takeAway}
               </button>
             </div>
           </li>

@@ -1,6 +1,7 @@
 import { Sheet } from '../../components/ui/Sheet';
 import { percent } from '../../drawings/numbers';
 import type { Readings } from './advice';
+import { readingsSheet } from '../../words/strings';
 
 const BAR = {
   rust: 'bg-rust',
@@ -15,7 +16,7 @@ export function ReadingsSheet({ readings }: { readings: Readings }) {
   const { main, couldBe, source } = readings;
   if (!main) return null;
   return (
-    <Sheet title="What the readings say" id="readings">
+    <Sheet title={readingsSheet.whatTheReadingsSay} id="readings">
       <div className="flex items-baseline justify-between gap-3">
         <h3 className="text-[15px] font-semibold leading-5">{main.title}</h3>
         {main.confidence !== null && <span className="text-[15px]">{percent(main.confidence)}</span>}
@@ -31,7 +32,7 @@ export function ReadingsSheet({ readings }: { readings: Readings }) {
       {main.text && <p className="mt-1.5 text-sm leading-5 text-ink-2">{main.text}</p>}
       {couldBe.length > 0 && (
         <>
-          <h4 className="mt-3 text-sm font-medium">Why, or what else it could be</h4>
+          <h4 className="mt-3 text-sm font-medium">{readingsSheet.whyOrWhatElse}</h4>
           <ul className="mt-1 list-disc space-y-0.5 pl-5 text-sm leading-5 text-ink-2">
             {couldBe.map((other) => (
               <li key={other}>{other}</li>
@@ -40,9 +41,7 @@ export function ReadingsSheet({ readings }: { readings: Readings }) {
         </>
       )}
       {(source || main.confidence !== null) && (
-        <p className="mt-3 text-xs text-ink-3">
-          {source && `Limit: ${source}. `}According to the unit type entered.
-        </p>
+        <p className="mt-3 text-xs text-ink-3">{readingsSheet.sourceLimitSourceAccording(source)}</p>
       )}
     </Sheet>
   );

@@ -5,12 +5,12 @@ import { Notice } from '../../components/ui/Notice';
 import { NotRead } from '../../components/ui/NotRead';
 import { Sheet } from '../../components/ui/Sheet';
 import { commandWords } from '../../domain/verdicts/event-words';
-import { celsius, irradiance, quantity } from '../../drawings/numbers';
 import { Staircase } from '../../drawings/Staircase';
-import { clock, clockSeconds, fullTime, shortDate } from '../../drawings/times';
+import { clockSeconds, fullTime } from '../../drawings/times';
 import type { StringPage } from '../../schemas/api/string';
 import type { StringMoment } from '../../schemas/api/workbench';
 import { momentQuery } from './queries';
+import { staircaseSheet } from '../../words/strings';
 
 interface Conditions {
   current: number | null;
@@ -25,17 +25,17 @@ function conditions(page: StringPage, at: Conditions): string {
     at.current === null
       ? ''
       : at.current > 0.1
-        ? `under load, ${quantity(at.current, 'A', 1)}`
-        : 'no current';
+        ? staircaseSheet.underLoad(at.current)
+        : staircaseSheet.noCurrent;
   const input =
     string.input.strings === 1
-      ? `alone on ${string.input.inverter}, input ${string.input.number}`
-      : `one of ${string.input.strings} on ${string.input.inverter}, input ${string.input.number}`;
+      ? staircaseSheet.aloneOnInput(string.input.inverter, string.input.number)
+      : staircaseSheet.oneOfOnInput(string.input.strings, string.input.inverter, string.input.number);
   return [
     load,
     input,
-    at.temperatureModule === null ? '' : `module ${celsius(at.temperatureModule)}`,
-    at.poaGlobal === null ? '' : `${irradiance(at.poaGlobal)} in plane`,
+    at.temperatureModule === null ? '' : staircaseSheet.moduleTemperatureModule(at.temperatureModule),
+    at.poaGlobal === null ? '' : staircaseSheet.inPlane(at.poaGlobal),
   ]
     .filter(Boolean)
     .join(' · ');
@@ -60,9 +60,9 @@ function Drawing({ drawn, notes }: { drawn: Drawn; notes: readonly string[] }) {
       </div>
       <p className="mt-2 text-sm text-ink-2">
         {drawn.expectedInShutdown !== null
-          ? 'Dotted: every unit in shutdown, by the type entered. '
-          : drawn.expectedVoltage !== null && `Dotted: expected from ${expectedFrom}. `}
-        {assumed && 'Dashed: assumed from what the unit claims, not measured at its output. '}
+          ? staircaseSheet.dottedEveryUnitIn
+          : drawn.expectedVoltage !== null && staircaseSheet.dottedExpectedFrom(expectedFrom)}
+        {assumed && staircaseSheet.dashedAssumedFromWhat}
         {notes.join(' ')}
       </p>
     </>
@@ -77,15 +77,13 @@ function Past({ moment, page }: { moment: StringMoment; page: StringPage }) {
     ...(moment.inForce && moment.inForce !== 'released' ? [`${commandWords(moment.inForce)}.`] : []),
     ...moment.notes,
     ...(swapped.length > 0
-      ? [
-          `Another unit sat then at ${swapped.map((s) => `${s.position} (${s.serial})`).join(', ')}; it was replaced since.`,
-        ]
+      ? [staircaseSheet.anotherUnitSatThen(swapped.map((s) => `${s.position} (${s.serial})`).join(', '))]
       : []),
   ];
   if (moment.source === 'nothing')
     return (
-      <Notice kind="empty" title="Nothing was reported at that moment">
-        No report came within three intervals before it. Choose another moment in the history below.
+      <Notice kind="empty" title={staircaseSheet.nothingWasReportedAt}>
+        {staircaseSheet.noReportCameWithin}
       </Notice>
     );
   return <Drawing drawn={moment} notes={notes} />;
@@ -120,8 +118,8 @@ export function StaircaseSheet({ page, moment, onNow }: Props) {
   const past = moment === null ? null : (then.data ?? null);
   const title =
     moment === null
-      ? 'Voltage staircase, now'
-      : `Voltage staircase at ${clock(moment * 1000, site.timeZone)}, ${shortDate(moment * 1000, site.timeZone)}`;
+      ? staircaseSheet.voltageStaircaseNow
+      : staircaseSheet.voltageStaircaseAt(moment, site.timeZone);
   const readAt = moment === null ? string.at : past?.reportAt ? past.reportAt * 1000 : null;
   return (
     <Sheet
@@ -139,7 +137,7 @@ export function StaircaseSheet({ page, moment, onNow }: Props) {
           )}
           {moment !== null && (
             <Button className="!py-0" onClick={onNow}>
-              Back to now
+              {staircaseSheet.backToNow}
             </Button>
           )}
         </span>
@@ -147,8 +145,8 @@ export function StaircaseSheet({ page, moment, onNow }: Props) {
     >
       {moment === null ? (
         string.at === null ? (
-          <Notice kind="empty" title="No reading yet">
-            The staircase appears with the first report of the logger.
+          <Notice kind="empty" title={staircaseSheet.noReadingYet}>
+            {staircaseSheet.theStaircaseAppearsWith}
           </Notice>
         ) : (
           <Drawing drawn={string} notes={[]} />
@@ -157,14 +155,14 @@ export function StaircaseSheet({ page, moment, onNow }: Props) {
         <div aria-busy={then.isFetching}>
           <NotRead
             error={then.error}
-            title="That moment could not be fetched"
+            title={staircaseSheet.thatMomentCouldNot}
             kind="failed"
             onRetry={() => then.refetch()}
           />
           {past ? (
             <Past moment={past} page={page} />
           ) : (
-            !then.error && <p role="status">Fetching that moment …</p>
+            !then.error && <p role="status">{staircaseSheet.fetchingThatMoment}</p>
           )}
         </div>
       )}

@@ -7,7 +7,7 @@ import { Heading } from '../../components/ui/Heading';
 import { LiveMark } from '../../components/ui/Live';
 import { NotRead } from '../../components/ui/NotRead';
 import { energy } from '../../drawings/numbers';
-import { clock, localDay } from '../../drawings/times';
+import { localDay } from '../../drawings/times';
 import { TraceSheet } from '../../components/trace/TraceSheet';
 import { Sheet } from '../../components/ui/Sheet';
 import { withQuery } from '../../lib/api';
@@ -29,6 +29,7 @@ import { notesQuery, stringQuery } from './queries';
 import { chosenUnits, DEFAULTS, permanentAddress, unitsInAddress } from './view';
 import { WhenNear } from './WhenNear';
 import { findingOf, type Sentence } from './words';
+import { stringView } from '../../words/strings';
 
 const UnitsSheet = lazy(() => import('./UnitsSheet'));
 const HeatSheet = lazy(() => import('./HeatSheet'));
@@ -84,7 +85,7 @@ function useNoteMarks(page: StringPage): ChartMark[] {
       (notes.data ?? []).map((note): ChartMark => ({
         from: Date.parse(note.from) / 1000,
         to: note.to === null ? null : Date.parse(note.to) / 1000,
-        words: `Note: ${note.text}`,
+        words: stringView.noteNote(note.text),
         tone: 'petrol',
       })),
     [notes.data],
@@ -136,9 +137,9 @@ function Page({ page: initial, history, view: initialView }: Props) {
     <>
       <Heading
         crumbs={[
-          { label: 'Fleet', href: paths.fleet() },
+          { label: stringView.fleet, href: paths.fleet() },
           { label: site.name, href: paths.site(site.id) },
-          { label: `String ${string.name}` },
+          { label: stringView.stringWhich(string.name) },
         ]}
         finding={finding.heading}
         sentence={<Words sentence={finding.sentence} />}
@@ -148,11 +149,11 @@ function Page({ page: initial, history, view: initialView }: Props) {
             <CopyLink address={address} />
             {page.openCase ? (
               <ButtonLink weight="primary" href={paths.caseFile(page.openCase.id)}>
-                Case {page.openCase.number}
+                {stringView.caseOpenCase(page.openCase.number)}
               </ButtonLink>
             ) : (
               <ButtonLink weight="primary" href={paths.caseNew({ string: string.id })}>
-                Open a case
+                {stringView.openACase}
               </ButtonLink>
             )}
           </>
@@ -163,7 +164,7 @@ function Page({ page: initial, history, view: initialView }: Props) {
           lostSince={!status.live && status.since ? status.since.toISOString() : null}
           timeZone={site.timeZone}
         />
-        <NotRead error={failed} title="The newest figures could not be fetched" />
+        <NotRead error={failed} title={stringView.theNewestFiguresCould} />
       </div>
       <p className="sr-only" role="status">
         {finding.heading}
@@ -200,7 +201,7 @@ function Page({ page: initial, history, view: initialView }: Props) {
           )}
           {steps.length > 0 && (
             <div className="order-4 min-w-0 lg:order-none">
-              <Sheet title="Do next" id="next">
+              <Sheet title={stringView.doNext} id="next">
                 <ol className="list-decimal space-y-1.5 pl-5 text-[15px] leading-[22px]">
                   {steps.map((step) => (
                     <li key={step}>{step}</li>
@@ -208,7 +209,7 @@ function Page({ page: initial, history, view: initialView }: Props) {
                 </ol>
                 <p className="no-print mt-3">
                   <ButtonLink href={withQuery(paths.walk(site.id), { string: string.name })}>
-                    Walk and ladder card
+                    {stringView.walkAndLadderCard}
                   </ButtonLink>
                 </p>
               </Sheet>
@@ -219,12 +220,12 @@ function Page({ page: initial, history, view: initialView }: Props) {
           </div>
           {page.lostToday && (
             <div className="order-4 min-w-0 lg:order-none">
-              <Sheet title="Lost here today" id="lost">
+              <Sheet title={stringView.lostHereToday} id="lost">
                 <p className="text-[28px] font-semibold leading-8 tracking-[-0.02em]">
                   {energy(page.lostToday.wh)}
                 </p>
                 <p className="mt-2 text-sm text-ink-2">
-                  since {clock(page.lostToday.since, site.timeZone)}, against {page.lostToday.against}
+                  {stringView.sinceAgainst(page.lostToday.since, site.timeZone, page.lostToday.against)}
                 </p>
               </Sheet>
             </div>

@@ -7,6 +7,7 @@ import { SiteTime } from '../../components/ui/Time';
 import { amperes, celsius, decibelMilliwatts, quantity } from '../../drawings/numbers';
 import type { SlotNow } from '../../schemas/api/now';
 import type { StringPage } from '../../schemas/api/string';
+import { unitTable } from '../../words/strings';
 
 const keyOf: Record<string, (slot: SlotNow) => string | number> = {
   position: (s) => s.position,
@@ -38,18 +39,18 @@ function columnsFor(page: StringPage): Column<SlotNow>[] {
   const columns: Column<SlotNow>[] = [
     {
       key: 'position',
-      label: 'Position',
+      label: unitTable.position,
       numeric: true,
       sortable: true,
       cell: (s) => <strong>{s.position}</strong>,
     },
     {
       key: 'state',
-      label: 'State',
+      label: unitTable.state,
       sortable: told,
       cell: (s) =>
         s.serial === null ? (
-          <span className="text-ink-2">No unit</span>
+          <span className="text-ink-2">{unitTable.noUnit}</span>
         ) : (
           <StateTag state={s.state} verdict={s.verdict} />
         ),
@@ -58,7 +59,7 @@ function columnsFor(page: StringPage): Column<SlotNow>[] {
   if (measures === 'output' || measures === 'both')
     columns.push({
       key: 'voltage',
-      label: 'Output',
+      label: unitTable.output,
       numeric: true,
       sortable: true,
       cell: (s) => quantity(s.voltage, 'V', 1),
@@ -66,7 +67,7 @@ function columnsFor(page: StringPage): Column<SlotNow>[] {
   if (measures === 'input' || measures === 'both')
     columns.push({
       key: 'module',
-      label: 'Module side',
+      label: unitTable.moduleSide,
       numeric: true,
       sortable: true,
       from: measures === 'both' ? 'sm' : undefined,
@@ -76,7 +77,7 @@ function columnsFor(page: StringPage): Column<SlotNow>[] {
     columns.push(
       {
         key: 'current',
-        label: 'Current',
+        label: unitTable.current,
         numeric: true,
         sortable: true,
         from: 'sm',
@@ -84,7 +85,7 @@ function columnsFor(page: StringPage): Column<SlotNow>[] {
       },
       {
         key: 'temperature',
-        label: 'Temperature',
+        label: unitTable.temperature,
         numeric: true,
         sortable: true,
         from: 'md',
@@ -92,16 +93,16 @@ function columnsFor(page: StringPage): Column<SlotNow>[] {
       },
       {
         key: 'signal',
-        label: 'Signal',
+        label: unitTable.signal,
         numeric: true,
         sortable: true,
         from: 'md',
         cell: (s) => decibelMilliwatts(s.signal),
       },
-      { key: 'gateway', label: 'Heard by', from: 'lg', cell: (s) => s.gateway ?? '–' },
+      { key: 'gateway', label: unitTable.heardBy, from: 'lg', cell: (s) => s.gateway ?? '–' },
       {
         key: 'seen',
-        label: 'Last report',
+        label: unitTable.lastReport,
         sortable: true,
         from: 'lg',
         cell: (s) => (s.seen ? <SiteTime at={s.seen} now={page.at} timeZone={page.site.timeZone} /> : '–'),
@@ -110,14 +111,14 @@ function columnsFor(page: StringPage): Column<SlotNow>[] {
   columns.push(
     {
       key: 'serial',
-      label: 'Serial',
+      label: unitTable.serial,
       sortable: true,
       from: 'sm',
       cell: (s) => <span className="whitespace-nowrap">{s.serial ?? '–'}</span>,
     },
     {
       key: 'place',
-      label: 'On the roof',
+      label: unitTable.onTheRoof,
       from: 'md',
       cell: (s) => <span className="text-ink-2">{s.roofPlace || '–'}</span>,
     },
@@ -131,18 +132,18 @@ export function UnitTable({ page }: { page: StringPage }) {
   return (
     <Sheet
       id="units"
-      title="Units, from the negative end"
+      title={unitTable.unitsFromTheNegative}
       aside={`${page.unitType.name} · ${page.moduleType}`}
       flush
     >
       <Table
-        caption={`Units of string ${page.string.name}`}
+        caption={unitTable.unitsOfString(page.string.name)}
         columns={columnsFor(page)}
         rows={sortSlots(page.string.slots, sorting)}
         rowKey={(s) => String(s.position)}
         sorting={sorting}
         onSort={setSorting}
-        empty={<p className="py-4 text-ink-2">No position is entered for this string.</p>}
+        empty={<p className="py-4 text-ink-2">{unitTable.noPositionIsEntered}</p>}
       />
     </Sheet>
   );

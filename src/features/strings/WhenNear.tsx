@@ -1,5 +1,6 @@
 import { Suspense, useRef, type ReactNode } from 'react';
 import { useNear } from '../../components/charts/near';
+import { whenNear } from '../../words/strings';
 
 /** What lies far down the page: its code and its data come when it nears the screen. */
 export function WhenNear({ height, children }: { height: number; children: ReactNode }) {
@@ -10,7 +11,7 @@ export function WhenNear({ height, children }: { height: number; children: React
       style={{ height }}
       className="border-b border-t-2 border-b-rule border-t-ink bg-sheet px-[18px] py-4 text-ink-2"
     >
-      {near && <p role="status">Loading …</p>}
+      {near && <p role="status">{whenNear.loading}</p>}
     </div>
   );
   return (

@@ -1,7 +1,8 @@
-import { listed, volts } from '../../drawings/numbers';
+import { listed } from '../../drawings/numbers';
 import type { StringPage } from '../../schemas/api/string';
 import type { SlotNow } from '../../schemas/api/now';
 import { modulesMissing, positionsInWords, unitsWhere, type Finding } from './words';
+import { stringsAdvice } from '../../words/strings';
 
 /** What the readings say, what to do next, and the caution that stands beside it. */
 export interface Explanation {
@@ -27,14 +28,11 @@ function evidenceText(held: readonly SlotNow[], page: StringPage): string {
   const measured = held.every(
     (s) => page.evidence.units.find((e) => e.position === s.position)?.basis === 'measured',
   );
-  parts.push(
-    `${many ? (held.length === 2 ? 'Both report' : 'All report') : 'It reports'} shutdown while the string is released`,
-  );
-  if (measured) parts.push(`the voltage on ${many ? 'their' : 'its'} output shows it`);
+  parts.push(stringsAdvice.shutdownWhileTheString(many, held.length));
+  if (measured) parts.push(stringsAdvice.theVoltageOnOutput(many));
   const lit = held.filter((s) => s.voltageIn !== null && s.voltageIn > 5);
-  if (lit.length === held.length) parts.push(`${many ? 'their inputs are' : 'its input is'} alive`);
-  if (modulesMissing(page.string) === held.length)
-    parts.push(`the string lacks just ${many ? 'their share' : 'its share'}`);
+  if (lit.length === held.length) parts.push(stringsAdvice.manyAlive(many));
+  if (modulesMissing(page.string) === held.length) parts.push(stringsAdvice.theStringLacksJust(many));
   return `${listed(parts)}.`;
 }
 
@@ -54,7 +52,7 @@ export function readingsOf(page: StringPage, finding: Finding): Readings {
       const held = unitsWhere(string, (s) => s.verdict === 'stuck');
       return {
         main: {
-          title: `${upper(positionsInWords(held))} held in shutdown`,
+          title: stringsAdvice.heldInShutdown(upper(positionsInWords(held))),
           confidence: confidenceOf(held),
           text: evidenceText(held, page),
           tone: 'rust',
@@ -70,9 +68,9 @@ export function readingsOf(page: StringPage, finding: Finding): Readings {
       if (live.length > 0)
         return {
           main: {
-            title: `${upper(positionsInWords(live))} still passing`,
+            title: stringsAdvice.stillPassing(upper(positionsInWords(live))),
             confidence: confidenceOf(live),
-            text: 'Shutdown is commanded, its time is over, and voltage stands at their output.',
+            text: stringsAdvice.shutdownIsCommandedIts,
             tone: 'crimson',
           },
           couldBe: couldBe(live),
@@ -84,7 +82,7 @@ export function readingsOf(page: StringPage, finding: Finding): Readings {
           title: string.finding ? upper(string.finding.words) : finding.heading,
           confidence: f?.confidence ?? null,
           text: f
-            ? `Measured ${volts(f.measuredV)}${f.expectedV === null ? '' : `, expected ${volts(f.expectedV)}`}; the threshold is ${volts(f.thresholdV)}.${f.scope === 'input' ? ' Strings share this input: which of them it is can not be told.' : ''}`
+            ? stringsAdvice.measuredMeasuredVExpectedVNull(f.measuredV, f.expectedV, f.thresholdV, f.scope)
             : '',
           tone: finding.kind === 'not_shutting_down' ? 'crimson' : 'rust',
         },
@@ -96,9 +94,9 @@ export function readingsOf(page: StringPage, finding: Finding): Readings {
       const open = unitsWhere(string, (s) => s.verdict === 'unconfirmed');
       return {
         main: {
-          title: 'Can’t tell',
+          title: stringsAdvice.cantTell,
           confidence: null,
-          text: 'Shutdown is commanded, and no reading shows whether these units followed.',
+          text: stringsAdvice.shutdownIsCommandedAnd,
           tone: 'slate',
         },
         couldBe: couldBe(open),
@@ -121,9 +119,9 @@ export function readingsOf(page: StringPage, finding: Finding): Readings {
     case 'low':
       return {
         main: {
-          title: 'Voltage below what is expected',
+          title: stringsAdvice.voltageBelowWhatIs,
           confidence: null,
-          text: `Expected from ${string.expectedFrom}. Shade, a bypassed part of a module and a wrong count of modules all look like this at one instant; the days tell them apart.`,
+          text: stringsAdvice.expectedFromShadeBypassed(string.expectedFrom),
           tone: 'rust',
         },
         couldBe: [],
@@ -137,14 +135,13 @@ export function readingsOf(page: StringPage, finding: Finding): Readings {
 const placeOf = (slot: SlotNow): string =>
   slot.roofPlace
     ? `${slot.position} (${slot.roofPlace.charAt(0).toLowerCase()}${slot.roofPlace.slice(1)})`
-    : `${slot.position}, whose place on the roof is not entered`;
+    : stringsAdvice.whosePlaceOnThe(slot.position);
 /** Where to go on the roof: four places at most, the table has the rest. */
 const walkTo = (slots: readonly SlotNow[]): string =>
   slots.length > 4
-    ? `Walk to ${slots.slice(0, 4).map(placeOf).join(', ')} and ${slots.length - 4} more, listed below.`
-    : `Walk to ${listed(slots.map(placeOf))}.`;
-const METER =
-  'Have a qualified person measure the home run at the inverter end with a rated meter: + to −, + to earth, − to earth.';
+    ? stringsAdvice.walkToAndMore(slots.slice(0, 4).map(placeOf).join(', '), slots.length)
+    : stringsAdvice.walkTo(listed(slots.map(placeOf)));
+const METER = stringsAdvice.haveAQualifiedPerson;
 
 /** Steps, in order, for the person who goes there. */
 export function nextSteps(page: StringPage, finding: Finding): string[] {
@@ -154,50 +151,33 @@ export function nextSteps(page: StringPage, finding: Finding): string[] {
       const held = unitsWhere(string, (s) => s.verdict === 'stuck');
       return [
         walkTo(held),
-        'String isolated and its current proved zero with a rated meter: re-mate the long leads there.',
-        `Still held? Swap unit ${held[0]?.position ?? ''} for a spare. This page watches for the change.`,
+        stringsAdvice.stringIsolatedAndIts,
+        stringsAdvice.stillHeldSwapUnit(held[0]?.position),
       ];
     }
     case 'not_shutting_down':
-      return [
-        'Keep everybody away from the array and its home run: treat them as live.',
-        METER,
-        'Look for a transmitter next door that still sends, and check the as-built.',
-      ];
+      return [stringsAdvice.keepEverybodyAwayFrom, METER, stringsAdvice.lookForATransmitter];
     case 'positions_unknown':
-      return [
-        'Check that the keep-alive reaches the string: is its transmitter on?',
-        'String isolated: measure its open-circuit voltage, then halve the string to find the unit.',
-      ];
+      return [stringsAdvice.checkThatTheKeep, stringsAdvice.stringIsolatedMeasureIts];
     case 'unexplained':
-      return [
-        METER,
-        'Compare the as-built with the roof: a module wired in without its unit, or a string on another input.',
-      ];
+      return [METER, stringsAdvice.compareTheAsBuilt];
     case 'unconfirmed':
-      return [METER, 'Until that shows otherwise, treat the string as live.'];
+      return [METER, stringsAdvice.untilThatShowsOtherwise];
     case 'unheard': {
       const missing = unitsWhere(string, (s) => s.state === 'unheard');
       return [
-        missing.length === string.counts.units
-          ? 'Is its gateway on and listening, and is there snow or shade on the modules?'
-          : walkTo(missing),
-        'Compare the serials on the roof with the as-built.',
+        missing.length === string.counts.units ? stringsAdvice.isItsGatewayOn : walkTo(missing),
+        stringsAdvice.compareTheSerialsOn,
       ];
     }
     case 'silent':
-      return [
-        'See whether other strings of the same gateway are silent too: then it is the gateway.',
-        walkTo(unitsWhere(string, (s) => s.state === 'silent')),
-      ];
+      return [stringsAdvice.seeWhetherOtherStrings, walkTo(unitsWhere(string, (s) => s.state === 'silent'))];
     case 'low':
-      return [
-        'Compare with yesterday and with the week below: shade comes at the same sun, a bypassed module stays.',
-      ];
+      return [stringsAdvice.compareWithYesterdayAnd];
     case 'unsteady':
       return [walkTo(unitsWhere(string, (s) => s.verdict === 'flapping' || s.verdict === 'late'))];
     case 'no_data':
-      return ['Is the logger reporting, and is the string on its roster?'];
+      return [stringsAdvice.isTheLoggerReporting];
     case 'in_shutdown':
     case 'dark':
     case 'passing':
@@ -207,22 +187,21 @@ export function nextSteps(page: StringPage, finding: Finding): string[] {
 
 /** The caution that stands beside what somebody might act on. */
 export function cautionOf(finding: Finding): { strong: string; rest: string } {
-  const isolate =
-    'Isolate, then prove with a rated meter before touching conductors. Follow local codes; this is work for licensed people.';
+  const isolate = stringsAdvice.isolateThenProveWith;
   switch (finding.kind) {
     case 'in_shutdown':
       return {
-        strong: 'Shutdown is not isolation.',
-        rest: `Each module and its leads to its unit stay at module voltage. ${isolate}`,
+        strong: stringsAdvice.shutdownIsNotIsolation,
+        rest: stringsAdvice.eachModuleAndIts(isolate),
       };
     case 'unheard':
       return {
-        strong: 'Until they have answered, units of this type pass full module voltage',
-        rest: `and do not obey the initiator. Treat every string as live. ${isolate}`,
+        strong: stringsAdvice.untilTheyHaveAnswered,
+        rest: stringsAdvice.andDoNotObey(isolate),
       };
     case 'dark':
-      return { strong: 'Dark is not dead.', rest: `The string is live at first light. ${isolate}` };
+      return { strong: stringsAdvice.darkIsNotDead, rest: stringsAdvice.theStringIsLive(isolate) };
     default:
-      return { strong: 'A reading on this page is not proof of a dead circuit.', rest: isolate };
+      return { strong: stringsAdvice.aReadingOnThis, rest: isolate };
   }
 }
