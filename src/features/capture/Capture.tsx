@@ -14,6 +14,7 @@ import { useCaptureWorker } from './use-worker';
 import { usePhone } from './use-phone';
 import { VIEW_DEFAULTS, forString, viewOf, type CaptureView } from './view';
 import { countAndKind } from './words';
+import { capture } from '../../words/capture';
 
 interface Props {
   /** From the server; null: this is the shell, and what the phone keeps has to do. */
@@ -72,7 +73,7 @@ export function Capture({ initial, search }: Props) {
         <Head
           phone={phone}
           state={state}
-          title="Wakeline on this phone"
+          title={capture.wakelineOnThisPhone}
           aside=""
           change={change}
           clock={clock}
@@ -94,7 +95,13 @@ export function Capture({ initial, search }: Props) {
       <Head
         phone={phone}
         state={state}
-        title={part === 'waiting' ? 'Waiting' : string ? `String ${string.name}` : snapshot.site.name}
+        title={
+          part === 'waiting'
+            ? capture.waiting
+            : string
+              ? capture.stringWhich(string.name)
+              : snapshot.site.name
+        }
         aside={string && part !== 'waiting' ? countAndKind(whole, string) : ''}
         change={change}
         clock={clock}
@@ -104,12 +111,12 @@ export function Capture({ initial, search }: Props) {
         {string && part !== 'waiting' && (
           <div className="mb-1 flex items-center justify-between gap-2">
             <Segmented
-              label="What is recorded"
+              label={capture.whatIsRecorded}
               name="part"
               value={view.part === 'checks' ? 'checks' : 'readings'}
               options={[
-                { value: 'readings', label: 'Readings' },
-                { value: 'checks', label: 'Checks' },
+                { value: 'readings', label: capture.readings },
+                { value: 'checks', label: capture.checks },
               ]}
               onChange={(next) => change({ part: next, fix: '', draft: '' })}
             />
@@ -118,7 +125,7 @@ export function Capture({ initial, search }: Props) {
               className="min-h-[44px] shrink-0 text-[15px] text-petrol underline underline-offset-[3px]"
               onClick={() => change(forString(view, ''))}
             >
-              All strings
+              {capture.allStrings}
             </button>
           </div>
         )}

@@ -6,7 +6,6 @@ import { cautionParts } from '../../components/readings/words';
 import { Button } from '../../components/ui/Button';
 import { Caution } from '../../components/ui/Caution';
 import { Notice } from '../../components/ui/Notice';
-import { clockOrDate } from '../../drawings/times';
 import { corrected, type Waiting } from '../../lib/capture-queue';
 import { newRef, type ShownCheck } from '../../lib/capture-records';
 import type { CheckRecord } from '../../schemas/api/checks';
@@ -24,6 +23,7 @@ import {
 } from './check-draft';
 import { keepPhotos } from './save';
 import type { ScreenProps } from './screen';
+import { checkForm } from '../../words/capture';
 
 interface Props extends ScreenProps {
   check: StringCheck;
@@ -34,9 +34,9 @@ interface Props extends ScreenProps {
 }
 
 const RESULTS: { result: CheckResult; label: string }[] = [
-  { result: 'pass', label: 'Pass' },
-  { result: 'fail', label: 'Fail' },
-  { result: 'not_applicable', label: 'Not applicable' },
+  { result: 'pass', label: checkForm.pass },
+  { result: 'fail', label: checkForm.fail },
+  { result: 'not_applicable', label: checkForm.notApplicable },
 ];
 
 /** What the form begins with: what was typed in this tab, what is put right, or what is recorded. */
@@ -93,10 +93,10 @@ export function CheckForm(props: Props) {
         await phone?.change([corrected(fixed, body, checkLabel(string.name, read.facts))]);
       } else await phone?.add([checkRecord(made, read.facts, record?.ref ?? null)]);
       keepDraft(person, string.id, check.key, null);
-      say(`Kept: ${checkLabel(string.name, read.facts)}.`);
+      say(checkForm.keptWhich(checkLabel(string.name, read.facts)));
       onSaved();
     } catch (error) {
-      setFailure(error instanceof Error ? error.message : 'It could not be kept.');
+      setFailure(error instanceof Error ? error.message : checkForm.itCouldNotBe);
     }
   };
   const photograph = async (files: File[]) => {
@@ -106,7 +106,7 @@ export function CheckForm(props: Props) {
       const taken = { phone: phone!, snapshot: site, string, subject: 'install_check' as const, subjectRef };
       setFailure((phone && (await keepPhotos(files, { ...taken, of: check.name }))) ?? '');
     } catch (error) {
-      setFailure(error instanceof Error ? error.message : 'The photo could not be kept.');
+      setFailure(error instanceof Error ? error.message : checkForm.thePhotoCouldNot);
     }
   };
   const about = new Set([view.draft, record?.ref].filter(Boolean));
@@ -124,7 +124,13 @@ export function CheckForm(props: Props) {
       )}
       {record && (
         <p className="text-sm text-ink-2">
-          {`Recorded: ${RESULT_WORDS[record.result]}, ${clockOrDate(record.at, site.at, site.site.timeZone)}, ${record.person}. A new record takes its place; this one is kept in the history.`}
+          {checkForm.recordedNewRecordTakes(
+            RESULT_WORDS[record.result],
+            record.at,
+            site.at,
+            site.site.timeZone,
+            record.person,
+          )}
         </p>
       )}
       {check.figures.map((figure) => (
@@ -145,12 +151,17 @@ export function CheckForm(props: Props) {
         </Notice>
       )}
       <Area
-        label="Reason (for fail and not applicable)"
+        label={checkForm.reasonForFailAnd}
         value={draft.reason}
         fault={faults.reason}
         onChange={(reason) => edit({ reason })}
       />
-      <Area label="Note" value={draft.note} fault={faults.note} onChange={(note) => edit({ note })} />
+      <Area
+        label={checkForm.note}
+        value={draft.note}
+        fault={faults.note}
+        onChange={(note) => edit({ note })}
+      />
       <WaitingPhotos phone={phone} photos={photos} progress={state.progress} />
       {failure && (
         <p role="alert" className="font-medium text-rust-ink">
@@ -170,17 +181,17 @@ export function CheckForm(props: Props) {
             {label}
           </Button>
         ))}
-        <PhotoButton label="Photo" onTaken={(files) => void photograph(files)} />
+        <PhotoButton label={checkForm.photo} onTaken={(files) => void photograph(files)} />
       </div>
       {check.offersNotApplicable && (
         <Button
           className="min-h-[48px] w-full"
           onClick={() => void save('not_applicable', check.offersNotApplicable ?? '')}
         >
-          {`Not applicable: ${check.offersNotApplicable}`}
+          {checkForm.notApplicable2(check.offersNotApplicable)}
         </Button>
       )}
-      <p className="text-xs text-ink-2">{`Source: ${check.source}`}</p>
+      <p className="text-xs text-ink-2">{checkForm.sourceSource(check.source)}</p>
     </div>
   );
 }

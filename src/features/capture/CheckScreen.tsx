@@ -4,20 +4,20 @@ import { judgeCheck } from '../../domain/commissioning/checks/judge';
 import { checksFor } from '../../domain/commissioning/checks/list';
 import { signOffState } from '../../domain/commissioning/checks/sign-off';
 import type { StringCheck } from '../../domain/commissioning/checks/definition';
-import { countAtStart } from '../../drawings/numbers';
 import type { ShownCheck } from '../../lib/capture-records';
 import { CheckForm } from './CheckForm';
 import { SignOffSheet } from './SignOffSheet';
 import type { ScreenProps } from './screen';
 import { VIEW_DEFAULTS, typesOf } from './view';
+import { checkScreen } from '../../words/capture';
 
 const PHASES = [
-  { phase: 'mounting', title: 'While the units go up' },
-  { phase: 'before_energising', title: 'Before energising' },
-  { phase: 'energised', title: 'Once current flows' },
+  { phase: 'mounting', title: checkScreen.whileTheUnitsGo },
+  { phase: 'before_energising', title: checkScreen.beforeEnergising },
+  { phase: 'energised', title: checkScreen.onceCurrentFlows },
 ] as const;
 const MARK = { pass: '✓', fail: '×', not_applicable: '–' } as const;
-const WORD = { pass: 'pass', fail: 'fail', not_applicable: 'not applicable' } as const;
+const WORD = { pass: 'pass', fail: 'fail', not_applicable: checkScreen.notApplicable } as const;
 
 /** The install checks of one string, one open at a time, and what its sign-off needs. */
 export function CheckScreen(props: ScreenProps) {
@@ -27,7 +27,7 @@ export function CheckScreen(props: ScreenProps) {
     () => (unitType && module ? checkContext(site, string.id) : null),
     [site, string.id, unitType, module],
   );
-  if (!context) return <p>The types of this string are not on this phone yet.</p>;
+  if (!context) return <p>{checkScreen.theTypesOfThis}</p>;
   const checks = checksFor(context);
   const recordOf = (check: StringCheck): ShownCheck | null =>
     string.checks.find((c) => c.check === check.key) ?? null;
@@ -36,9 +36,9 @@ export function CheckScreen(props: ScreenProps) {
   const heading =
     open === 0
       ? state.maySign
-        ? `All checks of ${string.name} are recorded`
-        : `Something blocks the sign-off of ${string.name}`
-      : `${countAtStart(open)} of ${checks.length} checks ${open === 1 ? 'is' : 'are'} open at ${string.name}`;
+        ? checkScreen.allChecksOfAre(string.name)
+        : checkScreen.somethingBlocksTheSign(string.name)
+      : checkScreen.ofChecksOpenAt(open, checks.length, string.name);
   const saved = () => {
     if (view.fix) {
       change({ ...VIEW_DEFAULTS, part: 'waiting' });
@@ -53,9 +53,7 @@ export function CheckScreen(props: ScreenProps) {
       <h1 tabIndex={-1} className="text-[28px] leading-[34px] tracking-[-0.03em] outline-none">
         {heading}
       </h1>
-      <p className="mb-4 mt-1 text-[16px] leading-[22px] text-ink-2">
-        Open a check, do it, and say how it stands. It is kept on this phone at once.
-      </p>
+      <p className="mb-4 mt-1 text-[16px] leading-[22px] text-ink-2">{checkScreen.openACheckDo}</p>
       {PHASES.map(({ phase, title }) => (
         <section key={phase} className="mb-5">
           <h2 className="mb-1 text-[15px]">{title}</h2>
@@ -88,8 +86,8 @@ export function CheckScreen(props: ScreenProps) {
                           <span className="block text-sm text-ink-2">{check.asks}</span>
                         </span>
                         <span className="shrink-0 text-sm leading-6 text-ink-2">
-                          {record ? WORD[record.result] : 'open'}
-                          {record?.waiting ? ', waiting' : ''}
+                          {record ? WORD[record.result] : checkScreen.open}
+                          {record?.waiting ? checkScreen.waiting : ''}
                         </span>
                       </button>
                     </h3>

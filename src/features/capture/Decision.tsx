@@ -4,7 +4,6 @@ import { STAGE_WORDS } from '../../domain/commissioning/readings/stages';
 import { FIELD_AT } from '../../components/readings/form';
 import { Button } from '../../components/ui/Button';
 import { volts } from '../../drawings/numbers';
-import { fullTime } from '../../drawings/times';
 import { corrected, kept, type Waiting } from '../../lib/capture-queue';
 import type { CaptureSnapshot } from '../../schemas/api/capture';
 import type { CheckRecord } from '../../schemas/api/checks';
@@ -12,6 +11,7 @@ import type { ReadingRecord } from '../../schemas/api/readings';
 import { RESULT_WORDS } from './records';
 import type { SiteProps } from './screen';
 import { PLACE_OF, VIEW_DEFAULTS, type CaptureView } from './view';
+import { decision } from '../../words/capture';
 
 /** What a record says, a line each. */
 function linesOf(site: CaptureSnapshot, kind: Waiting['kind'], record: unknown): string[] {
@@ -63,7 +63,7 @@ export function Decision({ phone, site, change, say, record }: SiteProps & { rec
   const attempt = (work: Promise<void> | undefined, words: string) => {
     work?.then(
       () => say(words),
-      (error: unknown) => setFault(error instanceof Error ? error.message : 'It could not be kept.'),
+      (error: unknown) => setFault(error instanceof Error ? error.message : decision.itCouldNotBe),
     );
   };
   const here = record.site === site.site.id;
@@ -73,11 +73,13 @@ export function Decision({ phone, site, change, say, record }: SiteProps & { rec
     <div className="mt-3 space-y-3">
       {record.state === 'conflict' && current ? (
         <>
-          <p className="text-[15px]">{`${current.person} recorded this too, ${fullTime(current.at, site.site.timeZone)}.`}</p>
+          <p className="text-[15px]">
+            {decision.recordedThisToo(current.person, current.at, site.site.timeZone)}
+          </p>
           <dl className="grid grid-cols-2 gap-3">
             {(
               [
-                ['Yours', record.body],
+                [decision.yours, record.body],
                 [current.person, current],
               ] as const
             ).map(([whose, version]) => (
@@ -94,23 +96,21 @@ export function Decision({ phone, site, change, say, record }: SiteProps & { rec
           <div className="grid grid-cols-2 gap-2">
             <Button
               className="min-h-[48px]"
-              onClick={() =>
-                attempt(phone?.change([kept(record, current.ref)]), 'Yours goes again and takes its place.')
-              }
+              onClick={() => attempt(phone?.change([kept(record, current.ref)]), decision.yoursGoesAgainAnd)}
             >
-              Keep mine
+              {decision.keepMine}
             </Button>
             <Button
               className="min-h-[48px]"
               onClick={() =>
-                attempt(phone?.leaveOut(record.ref, current.ref), `The record of ${current.person} stands.`)
+                attempt(phone?.leaveOut(record.ref, current.ref), decision.theRecordOfStands(current.person))
               }
             >
-              Keep theirs
+              {decision.keepTheirs}
             </Button>
             {record.kind === 'check' && here && (
               <Button className="col-span-2 min-h-[48px]" onClick={() => change(formFor(record))}>
-                Put both into one record
+                {decision.putBothIntoOne}
               </Button>
             )}
           </div>
@@ -118,12 +118,12 @@ export function Decision({ phone, site, change, say, record }: SiteProps & { rec
       ) : (
         <>
           <div className="border border-dashed border-rust bg-rust-wash p-3 text-[15px] text-rust-ink">
-            <p className="font-medium">{record.problem?.message ?? 'The server refused it.'}</p>
+            <p className="font-medium">{record.problem?.message ?? decision.theServerRefusedIt}</p>
           </div>
           <div className="grid grid-cols-2 gap-2">
             {record.kind !== 'photo' && here && (
               <Button className="min-h-[48px]" onClick={() => change(formFor(record))}>
-                Change it
+                {decision.changeIt}
               </Button>
             )}
             {late && (
@@ -134,31 +134,31 @@ export function Decision({ phone, site, change, say, record }: SiteProps & { rec
                     phone?.change([
                       corrected(record, { ...record.body, at: new Date().toISOString() }, record.label),
                     ]),
-                    'It goes again with the time of now.',
+                    decision.itGoesAgainWith,
                   )
                 }
               >
-                Send with the time of now
+                {decision.sendWithTheTime}
               </Button>
             )}
             <Button
               className="min-h-[48px]"
               onClick={() =>
-                attempt(phone?.change([corrected(record, record.body, record.label)]), 'It goes again.')
+                attempt(phone?.change([corrected(record, record.body, record.label)]), decision.itGoesAgain)
               }
             >
-              Send again
+              {decision.sendAgain}
             </Button>
             {sure ? (
               <Button
                 className="min-h-[48px] border-rust text-rust-ink"
-                onClick={() => attempt(phone?.leaveOut(record.ref), 'Left out.')}
+                onClick={() => attempt(phone?.leaveOut(record.ref), decision.leftOut)}
               >
-                Yes, leave it out
+                {decision.yesLeaveItOut}
               </Button>
             ) : (
               <Button className="min-h-[48px]" onClick={() => setSure(true)}>
-                Leave it out
+                {decision.leaveItOut}
               </Button>
             )}
           </div>

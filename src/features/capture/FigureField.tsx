@@ -5,6 +5,7 @@ import { pressed } from '../../components/readings/form';
 import { Choice } from '../../components/ui/Choice';
 import { Segmented } from '../../components/ui/Segmented';
 import type { CaptureSnapshot } from '../../schemas/api/capture';
+import { figureField } from '../../words/capture';
 
 interface Props {
   figure: Figure;
@@ -20,14 +21,14 @@ interface Props {
 /** One figure of a check: a number by the pad, one of a few words, or a connector type of the catalogue. */
 export function FigureField({ figure, value, fault, connectors, pad, openPad, onChange }: Props) {
   const id = useId();
-  const name = `${figure.name}${figure.needed ? '' : ' (if measured)'}`;
+  const name = `${figure.name}${figure.needed ? '' : figureField.ifMeasured}`;
   if (figure.kind === 'connector')
     return (
       <Choice
         label={figure.name}
         value={value}
         options={[
-          { value: '', label: 'not chosen' },
+          { value: '', label: figureField.notChosen },
           ...connectors
             .filter((c) => !c.archived || c.id === value)
             .map((c) => ({ value: c.id, label: `${c.name}, ${c.maker}` })),
@@ -66,7 +67,7 @@ export function FigureField({ figure, value, fault, connectors, pad, openPad, on
         {figure.min < 0 && (
           <button
             type="button"
-            aria-label={`Change the sign of ${figure.name}`}
+            aria-label={figureField.changeTheSignOf(figure.name)}
             onClick={() => onChange(pressed(value, 'sign'))}
             className="h-[48px] w-[48px] shrink-0 rounded border border-rule bg-sheet text-2xl"
           >

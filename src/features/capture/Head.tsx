@@ -6,6 +6,7 @@ import { paths } from '../../schemas/paths';
 import type { CapturePhone, PhoneState } from '../../lib/capture-phone';
 import { VIEW_DEFAULTS, type CaptureView } from './view';
 import { stripWords } from './words';
+import { head } from '../../words/capture';
 
 interface Props {
   phone: CapturePhone | null;
@@ -29,7 +30,7 @@ export function Head({ phone, state, title, aside, change, clock, said }: Props)
         <button
           type="button"
           onClick={() => change(VIEW_DEFAULTS)}
-          aria-label="To the list of strings"
+          aria-label={head.toTheListOf}
           className="-ml-2 flex h-[48px] w-[48px] shrink-0 items-center justify-center"
         >
           <Mark />
@@ -55,12 +56,12 @@ export function Head({ phone, state, title, aside, change, clock, said }: Props)
           )}
           {words.waiting && words.mayTry && (
             <Button className="ml-auto min-h-[44px]" onClick={() => void phone?.sendNow()}>
-              Send now
+              {head.sendNow}
             </Button>
           )}
           {sending && (
             <p role="status" className="ml-auto text-sm text-ink-2">
-              Sending…
+              {head.sending}
             </p>
           )}
         </div>
@@ -73,7 +74,7 @@ export function Head({ phone, state, title, aside, change, clock, said }: Props)
                 weight="primary"
                 href={paths.signIn(window.location.pathname + window.location.search)}
               >
-                Sign in again
+                {head.signInAgain}
               </ButtonLink>
             )}
           </div>

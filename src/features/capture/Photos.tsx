@@ -1,8 +1,9 @@
 import { useEffect, useId, useState } from 'react';
 import type { CapturePhone } from '../../lib/capture-phone';
 import type { Waiting } from '../../lib/capture-queue';
-import { counted, percent } from '../../drawings/numbers';
+import { percent } from '../../drawings/numbers';
 import { PHOTO_TYPES } from '../../schemas/api/attachments';
+import { capturePhotos } from '../../words/capture';
 
 interface ButtonProps {
   label: string;
@@ -48,7 +49,7 @@ export function WaitingPhotos({ phone, photos, progress }: ListProps) {
   if (photos.length === 0) return null;
   return (
     <div>
-      <p className="mb-1 text-sm text-ink-2">{`${counted(photos.length, 'photo')} on this phone, waiting to be sent`}</p>
+      <p className="mb-1 text-sm text-ink-2">{capturePhotos.onThisPhoneWaiting(photos.length)}</p>
       <ul className="flex flex-wrap gap-2">
         {photos.map((photo) => (
           <li key={photo.ref}>
@@ -99,7 +100,7 @@ export function Thumbnail({
             className="block h-1 w-full accent-petrol"
             value={share}
             max={1}
-            aria-label="Sent of it"
+            aria-label={capturePhotos.sentOfIt}
           />
           {percent(share)}
         </figcaption>

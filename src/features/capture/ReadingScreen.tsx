@@ -37,6 +37,7 @@ import {
   viewChange,
   type CaptureView,
 } from './view';
+import { readingScreen } from '../../words/capture';
 
 const capital = (words: string): string => words.charAt(0).toUpperCase() + words.slice(1);
 
@@ -80,7 +81,7 @@ export function ReadingScreen({ phone, state, site, string, view, change, clock,
   const light = chosen(LIGHTS, view.light, 'bright');
 
   const read = unitType && module && meaning(site, string, view, { stage, light, at: clock.toISOString() });
-  if (!unitType || !module || !read) return <p>The types of this string are not on this phone yet.</p>;
+  if (!unitType || !module || !read) return <p>{readingScreen.theTypesOfThis}</p>;
   const { form, faults, question, waiting, answer } = read;
   const next = stringAfter(site.strings, string.id);
   const places = typedPlaces(view);
@@ -105,7 +106,7 @@ export function ReadingScreen({ phone, state, site, string, view, change, clock,
     for (const [i, { of, read: one }] of values.entries()) {
       if (!one.question) {
         change({ at: of });
-        setFault(`${kindWords(of)}: ${Object.values(one.faults)[0] ?? 'type what the meter shows.'}`);
+        setFault(`${kindWords(of)}: ${Object.values(one.faults)[0] ?? readingScreen.typeWhatTheMeter}`);
         return;
       }
       const given = facts(of, one.question.voltageV);
@@ -127,14 +128,14 @@ export function ReadingScreen({ phone, state, site, string, view, change, clock,
         await phone?.change([corrected(fixed, body, made[0]!.label)]);
       } else await phone?.add(made);
       setFault('');
-      say(`Kept: ${made.map((r) => r.label).join('; ')}.`);
+      say(readingScreen.keptMap(made.map((r) => r.label).join('; ')));
       change(
         next && !fixed
           ? forString(view, next.id)
           : { ...forString(view, ''), part: fixed ? 'waiting' : 'readings' },
       );
     } catch (error) {
-      setFault(error instanceof Error ? error.message : 'It could not be kept.');
+      setFault(error instanceof Error ? error.message : readingScreen.itCouldNotBe);
     } finally {
       setSaving(false);
     }
@@ -151,11 +152,11 @@ export function ReadingScreen({ phone, state, site, string, view, change, clock,
           string,
           subject: 'meter_reading',
           subjectRef: draft,
-          of: `meter, ${kindWords(place)}`,
+          of: readingScreen.meterPlace(kindWords(place)),
         }));
       setFault(left ?? '');
     } catch (error) {
-      setFault(error instanceof Error ? error.message : 'The photo could not be kept.');
+      setFault(error instanceof Error ? error.message : readingScreen.thePhotoCouldNot);
     }
   };
   const photos = state.records.filter(
@@ -171,19 +172,19 @@ export function ReadingScreen({ phone, state, site, string, view, change, clock,
       }}
     >
       <h1 tabIndex={-1} className="text-[30px] leading-9 tracking-[-0.03em] outline-none">
-        What does the meter say?
+        {readingScreen.whatDoesTheMeter}
       </h1>
       <p className="mb-2 mt-0.5 text-[16px] leading-[22px] text-ink-2">{HOW_TO_MEASURE[place]}</p>
       <Fold
-        title={`${capital(STAGE_WORDS[stage])}; ${METER_LABELS[meter]} of the meter`}
-        opens="Change"
+        title={readingScreen.ofTheMeter(capital(STAGE_WORDS[stage]), METER_LABELS[meter])}
+        opens={readingScreen.change}
         className="mb-3"
       >
         <div className="space-y-2 pb-3">
           <Segmented
             look="bold"
             name="stage"
-            label="Stage"
+            label={readingScreen.stage}
             value={stage}
             options={stages.map((value) => ({ value, label: STAGE_WORDS[value] }))}
             onChange={(value: ReadingStage) => change({ stage: value, commanded: '' })}
@@ -207,13 +208,13 @@ export function ReadingScreen({ phone, state, site, string, view, change, clock,
         <AnswerSheet answer={answer} question={question} waiting={waiting} faults={faults} />
         {answer && read.around.siblings.length > 0 && (
           <p className="text-sm text-ink-2">
-            {`Other strings used: ${read.around.siblings.map((s) => `${s.name} ${volts(s.voltageV)}`).join(', ')}, read under the same light.`}
+            {readingScreen.otherStringsUsedRead(
+              read.around.siblings.map((s) => `${s.name} ${volts(s.voltageV)}`).join(', '),
+            )}
           </p>
         )}
         {unitType.kind !== 'shutdown_only' && (
-          <p className="text-sm text-ink-2">
-            {`${string.heard} of ${string.units} units had answered the roll call when this phone last heard.`}
-          </p>
+          <p className="text-sm text-ink-2">{readingScreen.ofUnitsHadAnswered(string.heard, string.units)}</p>
         )}
         {answer && question && <ReadingScale answer={answer} question={question} />}
         <RecordedReadings site={site} string={string} stage={stage} change={change} />
@@ -241,10 +242,14 @@ export function ReadingScreen({ phone, state, site, string, view, change, clock,
             className="min-h-[52px] flex-1"
             disabled={places.length === 0 || saving || !phone}
           >
-            {fixed ? 'Save the correction' : next ? `Save and go to ${next.name}` : 'Save and go to the list'}
+            {fixed
+              ? readingScreen.saveTheCorrection
+              : next
+                ? readingScreen.saveAndGoTo(next.name)
+                : readingScreen.saveAndGoToThe}
           </Button>
           <PhotoButton
-            label={photos.length > 0 ? `Photo (${photos.length})` : 'Photo'}
+            label={photos.length > 0 ? readingScreen.photoPhotos(photos.length) : readingScreen.photo}
             onTaken={(f) => void photograph(f)}
           />
         </div>

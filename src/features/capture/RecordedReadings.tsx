@@ -15,6 +15,7 @@ import { clockOrDate } from '../../drawings/times';
 import type { ShownReading } from '../../lib/capture-records';
 import type { CaptureSnapshot, CaptureString } from '../../schemas/api/capture';
 import { PLACE_OF, type CaptureView } from './view';
+import { recordedReadings } from '../../words/capture';
 
 interface Props {
   site: CaptureSnapshot;
@@ -39,7 +40,7 @@ export function RecordedReadings({ site, string, stage, change }: Props) {
   );
   if (rows.length === 0) return null;
   return (
-    <Sheet title={`Recorded ${STAGE_WORDS[stage]}`} level={2}>
+    <Sheet title={recordedReadings.recordedStage(STAGE_WORDS[stage])} level={2}>
       <ul className="-my-2 divide-y divide-rule-faint">
         {rows.map(({ reading, finding }) => (
           <li key={reading.kind} className="flex items-center gap-3 py-2">
@@ -50,7 +51,7 @@ export function RecordedReadings({ site, string, stage, change }: Props) {
               <p className="text-sm text-ink-2">{finding.headline}</p>
               <p className="text-sm text-ink-2">
                 {clockOrDate(reading.at, site.at, site.site.timeZone)}, {reading.person}
-                {reading.waiting ? ', waiting to be sent' : ''}
+                {reading.waiting ? recordedReadings.waitingToBeSent : ''}
               </p>
             </div>
             <Button
@@ -66,9 +67,9 @@ export function RecordedReadings({ site, string, stage, change }: Props) {
                 });
                 window.scrollTo({ top: 0 });
               }}
-              aria-label={`Correct ${KIND_WORDS[reading.kind]}`}
+              aria-label={recordedReadings.correctKind(KIND_WORDS[reading.kind])}
             >
-              Correct
+              {recordedReadings.correct}
             </Button>
           </li>
         ))}

@@ -2,30 +2,28 @@ import { useEffect, useState } from 'react';
 import { ButtonLink } from '../../components/ui/Button';
 import { Notice } from '../../components/ui/Notice';
 import { clockOrDate } from '../../drawings/times';
-import { counted } from '../../drawings/numbers';
 import type { CapturePhone, PhoneState } from '../../lib/capture-phone';
 import type { CaptureSnapshot } from '../../schemas/api/capture';
 import { paths } from '../../schemas/paths';
+import { shell } from '../../words/capture';
 
 /** The site that is asked for is not on this phone. */
 export function NotHere({ state }: { state: PhoneState }) {
-  if (!state.ready) return <p role="status">Reading what this phone keeps…</p>;
+  if (!state.ready) return <p role="status">{shell.readingWhatThisPhone}</p>;
   return (
     <>
       <h1 className="text-[28px] leading-[34px] tracking-[-0.03em]">
-        {state.here ? 'This site is not on this phone yet' : 'Nobody is signed in on this phone'}
+        {state.here ? shell.thisSiteIsNot : shell.nobodyIsSignedIn}
       </h1>
       <p className="mt-2 text-[16px] leading-[22px] text-ink-2">
-        {state.here
-          ? 'Open it once while there is a network; from then on it opens without one.'
-          : 'Without a network nobody can sign in. What was recorded on this phone is kept until its person signs in again.'}
+        {state.here ? shell.openItOnceWhile : shell.withoutANetworkNobody}
       </p>
       <div className="mt-4 flex flex-wrap gap-2">
         <ButtonLink className="min-h-[48px]" href={window.location.pathname}>
-          Try again
+          {shell.tryAgain}
         </ButtonLink>
         <ButtonLink className="min-h-[48px]" href={paths.captureShell()}>
-          Sites on this phone
+          {shell.sitesOnThisPhone}
         </ButtonLink>
       </div>
     </>
@@ -45,22 +43,18 @@ export function KeptSites({ phone, state }: { phone: CapturePhone | null; state:
       gone = true;
     };
   }, [phone]);
-  if (!sites) return <p role="status">Reading what this phone keeps…</p>;
+  if (!sites) return <p role="status">{shell.readingWhatThisPhone}</p>;
   return (
     <>
       <h1 className="text-[28px] leading-[34px] tracking-[-0.03em]">
-        {sites.length === 0
-          ? 'No site is kept on this phone'
-          : `${counted(sites.length, 'site')} on this phone`}
+        {sites.length === 0 ? shell.noSiteIsKept : shell.onThisPhone(sites.length)}
       </h1>
       <p className="mb-4 mt-2 text-[16px] leading-[22px] text-ink-2">
-        {sites.length === 0
-          ? 'Open a site’s page for the phone while there is a network: scan its code on the commissioning page.'
-          : 'These open without a network.'}
+        {sites.length === 0 ? shell.openASitesPage : shell.theseOpenWithoutA}
       </p>
       {sites.length === 0 && state.ready && state.here === null && (
-        <Notice kind="empty" title="Nobody is signed in on this phone">
-          Sign in while there is a network.
+        <Notice kind="empty" title={shell.nobodyIsSignedIn}>
+          {shell.signInWhileThere}
         </Notice>
       )}
       <ul className="border-t-2 border-ink bg-sheet empty:hidden">
@@ -69,14 +63,14 @@ export function KeptSites({ phone, state }: { phone: CapturePhone | null; state:
             <a href={paths.capture(kept.site.id)} className="block min-h-[48px] px-3 py-2 no-underline">
               <span className="block text-[17px] font-semibold">{kept.site.name}</span>
               <span className="text-sm text-ink-2">
-                {`${counted(kept.strings.length, 'string')}, as of ${clockOrDate(kept.at, new Date(), kept.site.timeZone)}`}
+                {shell.asOf(kept.strings.length, clockOrDate(kept.at, new Date(), kept.site.timeZone))}
               </span>
             </a>
           </li>
         ))}
       </ul>
       <ButtonLink className="mt-4 min-h-[48px]" href={paths.commissioning()}>
-        To the commissioning pages
+        {shell.toTheCommissioningPages}
       </ButtonLink>
     </>
   );

@@ -4,13 +4,13 @@ import type { SignOffState } from '../../domain/commissioning/checks/sign-off';
 import { Button } from '../../components/ui/Button';
 import { Sheet } from '../../components/ui/Sheet';
 import { listed } from '../../drawings/numbers';
-import { fullTime } from '../../drawings/times';
 import { api, ApiError } from '../../lib/api';
 import { ofPerson } from '../../lib/capture-queue';
 import { newRef } from '../../lib/capture-records';
 import { PERSON_HEADER } from '../../schemas/api/capture';
 import { paths } from '../../schemas/paths';
 import type { ScreenProps } from './screen';
+import { signOffSheet } from '../../words/capture';
 
 /** The signature under a string's checks: what blocks it, what it does not cover, and the button. Needs a network. */
 export function SignOffSheet({
@@ -31,11 +31,11 @@ export function SignOffSheet({
   const away = state.unreachableSince !== null || state.link.state !== 'open';
   const why =
     waits > 0
-      ? `${waits === 1 ? 'One record' : `${waits} records`} of this string must reach the server first.`
+      ? signOffSheet.waits1OneRecord(waits)
       : away
-        ? 'Signing needs a network. Everything else is kept until then.'
+        ? signOffSheet.signingNeedsANetwork
         : string.fingerprint === ''
-          ? 'The server is asked for the checks as it has them.'
+          ? signOffSheet.theServerIsAsked
           : '';
   const { signOff } = string;
   const missing = sign.blocks.filter((block) => block.kind === 'missing');
@@ -48,18 +48,25 @@ export function SignOffSheet({
         body: { ref: ref(), fingerprint: string.fingerprint },
         headers: { [PERSON_HEADER]: site.person.id },
       });
-      say(`Signed off: the install checks of ${string.name}.`);
+      say(signOffSheet.signedOffTheInstall(string.name));
       ref.forget();
     } catch (error) {
-      setFault(error instanceof ApiError ? error.message : 'It could not be signed. Try again.');
+      setFault(error instanceof ApiError ? error.message : signOffSheet.itCouldNotBe);
     }
     await phone?.refresh();
     setSigning(false);
   };
   return (
-    <Sheet id="sign-off" title={sign.maySign ? 'Nothing blocks the sign-off' : 'What blocks the sign-off'}>
+    <Sheet
+      id="sign-off"
+      title={sign.maySign ? signOffSheet.nothingBlocksTheSign : signOffSheet.whatBlocksTheSign}
+    >
       {missing.length > 0 && (
-        <p>{`Not recorded yet: ${listed(missing.map((block) => checkDefinition(block.check).name.toLowerCase()))}.`}</p>
+        <p>
+          {signOffSheet.notRecordedYet(
+            listed(missing.map((block) => checkDefinition(block.check).name.toLowerCase())),
+          )}
+        </p>
       )}
       <ul className="space-y-2">
         {sign.blocks
@@ -73,7 +80,7 @@ export function SignOffSheet({
                 className="min-h-[44px] text-petrol underline underline-offset-[3px]"
                 onClick={() => change({ check: block.check, draft: '', fix: '' })}
               >
-                {`Open ${checkDefinition(block.check).name.toLowerCase()}`}
+                {signOffSheet.openCheck(checkDefinition(block.check).name)}
               </button>
             </li>
           ))}
@@ -87,8 +94,8 @@ export function SignOffSheet({
       )}
       {signOff && (
         <p className={`mt-3 ${signOff.stale ? 'text-rust-ink' : ''}`}>
-          {`Signed by ${signOff.person}, ${fullTime(signOff.at, site.site.timeZone)}.`}
-          {signOff.stale ? ' Something was recorded since: sign again.' : ''}
+          {signOffSheet.signedBy(signOff.person, signOff.at, site.site.timeZone)}
+          {signOff.stale ? signOffSheet.somethingWasRecordedSince : ''}
         </p>
       )}
       {sign.maySign && (!signOff || signOff.stale) && (
@@ -105,7 +112,7 @@ export function SignOffSheet({
             disabled={signing || why !== '' || !phone}
             onClick={() => void submit()}
           >
-            {`Sign off the checks of ${string.name} as ${site.person.name}`}
+            {signOffSheet.signOffTheChecks(string.name, site.person.name)}
           </Button>
         </>
       )}

@@ -4,11 +4,11 @@ import { signOffState } from '../../domain/commissioning/checks/sign-off';
 import { Field } from '../../components/ui/Field';
 import { Notice } from '../../components/ui/Notice';
 import { ButtonLink } from '../../components/ui/Button';
-import { countAtStart, counted } from '../../drawings/numbers';
 import { paths } from '../../schemas/paths';
 import type { SiteProps } from './screen';
 import { forString, stageOf, typesOf, kindsRead } from './view';
 import { countAndKind } from './words';
+import { stringList } from '../../words/capture';
 
 /** The strings of the site: how far each is, and the way in. */
 export function StringList({ site, view, change, state }: SiteProps) {
@@ -26,30 +26,30 @@ export function StringList({ site, view, change, state }: SiteProps) {
   const without = rows.filter((r) => !r.readings.includes('positive_to_negative')).length;
   const heading =
     rows.length === 0
-      ? 'This site has no strings yet'
+      ? stringList.thisSiteHasNo
       : without === 0
-        ? 'Every string has its reading + to −'
+        ? stringList.everyStringHasIts
         : without === rows.length
-          ? 'No string has a reading + to − yet'
-          : `${countAtStart(without)} of ${counted(rows.length, 'string')} ${without === 1 ? 'has' : 'have'} no reading + to − yet`;
+          ? stringList.noStringHasA
+          : stringList.ofNoReadingTo(without, rows.length);
   return (
     <div>
       <h1 tabIndex={-1} className="text-[28px] leading-[34px] tracking-[-0.03em] outline-none">
         {heading}
       </h1>
       <p className="mb-4 mt-1 text-[16px] leading-[22px] text-ink-2">
-        {`${site.site.name}, ${site.site.place}. Open a string for its readings and its install checks; both work without a network.`}
+        {stringList.openStringForIts(site.site.name, site.site.place)}
       </p>
       <Field
-        label="Find a string"
+        label={stringList.findAString}
         value={view.q}
         autoComplete="off"
         onChange={(event) => change({ q: event.target.value }, 'typed')}
       />
       {shown.length === 0 && rows.length > 0 && (
         <div className="mt-4">
-          <Notice kind="empty" title={`No string is called like "${view.q}"`}>
-            Empty the field to see all.
+          <Notice kind="empty" title={stringList.noStringIsCalled(view.q)}>
+            {stringList.emptyTheFieldTo}
           </Notice>
         </div>
       )}
@@ -61,42 +61,38 @@ export function StringList({ site, view, change, state }: SiteProps) {
                 <p className="text-[17px] font-semibold">{string.name}</p>
                 <p className="text-sm text-ink-2">{countAndKind(site, string)}</p>
                 <p className="text-sm text-ink-2">
-                  {`${readings.length} of 3 readings, ${string.checks.length} of ${asked} checks`}
-                  {string.signOff && !string.signOff.stale ? ', signed off' : ''}
+                  {stringList.ofReadingsOfChecks(readings.length, string.checks.length, asked)}
+                  {string.signOff && !string.signOff.stale ? stringList.signedOff : ''}
                 </p>
                 {failed > 0 && (
-                  <p className="text-sm font-medium text-rust-ink">
-                    {failed === 1 ? 'One check blocks' : `${failed} checks block`} the sign-off
-                  </p>
+                  <p className="text-sm font-medium text-rust-ink">{stringList.failed1OneCheck(failed)}</p>
                 )}
               </div>
               <button
                 type="button"
                 className="min-h-[48px] rounded border border-rule bg-sheet px-3 text-[15px] font-medium"
-                aria-label={`Readings of ${string.name}`}
+                aria-label={stringList.readingsOf(string.name)}
                 onClick={() => change({ ...forString(view, string.id), part: 'readings' })}
               >
-                Readings
+                {stringList.readings}
               </button>
               <button
                 type="button"
                 className="min-h-[48px] rounded border border-rule bg-sheet px-3 text-[15px] font-medium"
-                aria-label={`Checks of ${string.name}`}
+                aria-label={stringList.checksOf(string.name)}
                 onClick={() => change({ ...forString(view, string.id), part: 'checks' })}
               >
-                Checks
+                {stringList.checks}
               </button>
             </div>
           </li>
         ))}
       </ul>
       <p className="mt-4 text-sm text-ink-2">
-        {state.lasting
-          ? 'What you record is kept on this phone until the server has it.'
-          : 'This browser keeps nothing: do not close this page while something waits.'}
+        {state.lasting ? stringList.whatYouRecordIs : stringList.thisBrowserKeepsNothing}
       </p>
       <ButtonLink className="mt-3 min-h-[44px]" href={paths.commissioningSite(site.site.id)}>
-        The site’s commissioning page
+        {stringList.theSitesCommissioningPage}
       </ButtonLink>
     </div>
   );

@@ -1,24 +1,24 @@
 import { Notice } from '../../components/ui/Notice';
 import { Tag } from '../../components/ui/Tag';
-import { countAtStart } from '../../drawings/numbers';
 import { clockOrDate } from '../../drawings/times';
 import { ofPerson, type Waiting } from '../../lib/capture-queue';
 import { Decision } from './Decision';
 import { Thumbnail } from './Photos';
 import type { SiteProps } from './screen';
+import { waitingScreen } from '../../words/capture';
 
 /** What this person recorded on this phone and the server does not have yet. */
 export function WaitingScreen(props: SiteProps) {
   const { phone, state, site, clock } = props;
   const mine = ofPerson(state.records, site.person.id);
   const decisions = mine.filter((r) => r.state !== 'waiting').length;
-  if (!state.ready) return <p role="status">Reading what this phone keeps…</p>;
+  if (!state.ready) return <p role="status">{waitingScreen.readingWhatThisPhone}</p>;
   const heading =
     mine.length === 0
-      ? 'Nothing waits: the server has everything'
+      ? waitingScreen.nothingWaitsTheServer
       : decisions > 0
-        ? `${countAtStart(decisions)} of ${mine.length} ${decisions === 1 ? 'wants' : 'want'} your decision`
-        : `${mine.length === 1 ? 'One record waits' : `${countAtStart(mine.length)} records wait`} to be sent`;
+        ? waitingScreen.ofYourDecision(decisions, mine.length)
+        : waitingScreen.mine1OneRecord(mine.length);
   return (
     <div>
       <h1 tabIndex={-1} className="text-[28px] leading-[34px] tracking-[-0.03em] outline-none">
@@ -26,13 +26,13 @@ export function WaitingScreen(props: SiteProps) {
       </h1>
       <p className="mb-4 mt-1 text-[16px] leading-[22px] text-ink-2">
         {mine.length === 0
-          ? 'What you record next is kept here until it is sent.'
+          ? waitingScreen.whatYouRecordNext
           : state.lasting
-            ? 'They are kept on this phone, in the order in which they were made, also when the page is closed.'
-            : 'This browser keeps nothing: do not close this page before they are sent.'}
+            ? waitingScreen.theyAreKeptOn
+            : waitingScreen.thisBrowserKeepsNothing}
       </p>
       {mine.length === 0 ? (
-        <Notice kind="done" title="All sent" />
+        <Notice kind="done" title={waitingScreen.allSent} />
       ) : (
         <ol className="border-t-2 border-ink bg-sheet">
           {mine.map((record) => (
@@ -44,9 +44,11 @@ export function WaitingScreen(props: SiteProps) {
                 <div className="min-w-0 flex-1">
                   <p className="text-[16px] font-semibold leading-[22px]">{record.label}</p>
                   <p className="text-sm text-ink-2">
-                    {`Recorded ${clockOrDate(record.madeAt, clock, site.site.timeZone)}`}
-                    {record.site === site.site.id ? '' : ', at another site'}
-                    {record.tries > 0 && record.state === 'waiting' ? `, tried ${record.tries} times` : ''}
+                    {waitingScreen.recordedMadeAt(clockOrDate(record.madeAt, clock, site.site.timeZone))}
+                    {record.site === site.site.id ? '' : waitingScreen.atAnotherSite}
+                    {record.tries > 0 && record.state === 'waiting'
+                      ? waitingScreen.triedTimes(record.tries)
+                      : ''}
                   </p>
                 </div>
                 <StateWord record={record} sending={state.sending === record.ref} />
@@ -61,13 +63,13 @@ export function WaitingScreen(props: SiteProps) {
 }
 
 function StateWord({ record, sending }: { record: Waiting; sending: boolean }) {
-  if (sending) return <Tag tone="petrol">sending</Tag>;
+  if (sending) return <Tag tone="petrol">{waitingScreen.sending}</Tag>;
   switch (record.state) {
     case 'waiting':
-      return <Tag tone="outline">waiting</Tag>;
+      return <Tag tone="outline">{waitingScreen.waiting}</Tag>;
     case 'conflict':
-      return <Tag tone="rust">two versions</Tag>;
+      return <Tag tone="rust">{waitingScreen.twoVersions}</Tag>;
     case 'refused':
-      return <Tag tone="rust">refused</Tag>;
+      return <Tag tone="rust">{waitingScreen.refused}</Tag>;
   }
 }

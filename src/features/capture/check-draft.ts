@@ -3,6 +3,7 @@ import { figureFaults } from '../../domain/commissioning/checks/figures';
 import { typedNumber } from '../../schemas/typed-number';
 import type { CheckRecord } from '../../schemas/api/checks';
 import type { CheckFacts } from './records';
+import { checkDraft } from '../../words/capture';
 
 /** What is typed of one check: all text, kept for this tab so that a reload loses nothing. */
 export interface CheckDraft {
@@ -68,17 +69,16 @@ export function readDraft(
   const read: Figures = values;
   for (const { figure, message } of figureFaults(check, result, read, knows)) faults[figure] ??= message;
   const reason = draft.reason.trim();
-  if (result === 'not_applicable' && reason === '')
-    faults.reason = 'Say why it does not apply here; without a reason it stays open.';
-  if (result === 'fail' && reason === '') faults.reason = 'Say what is wrong, for whoever puts it right.';
-  if (reason.length > 500) faults.reason = 'At most 500 characters. Put the rest into the note.';
-  if (draft.note.trim().length > 2000) faults.note = 'At most 2000 characters.';
+  if (result === 'not_applicable' && reason === '') faults.reason = checkDraft.sayWhyItDoes;
+  if (result === 'fail' && reason === '') faults.reason = checkDraft.sayWhatIsWrong;
+  if (reason.length > 500) faults.reason = checkDraft.atMost500Characters;
+  if (draft.note.trim().length > 2000) faults.note = checkDraft.atMost2000Characters;
   if (Object.keys(faults).length > 0) return { facts: null, faults };
   return { facts: { check, result, reason, note: draft.note.trim(), figures: read }, faults: null };
 }
 
 const keyOf = (person: string, string: string, check: string): string =>
-  `wakeline-check ${person} ${string} ${check}`;
+  checkDraft.wakelineCheck(person, string, check);
 
 /** What was typed and not saved in this tab; null: nothing. */
 export function keptDraft(person: string, string: string, check: string): CheckDraft | null {

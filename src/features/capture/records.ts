@@ -5,6 +5,7 @@ import type { CaptureSnapshot, CaptureString } from '../../schemas/api/capture';
 import type { CheckInput } from '../../schemas/api/checks';
 import type { ReadingInput } from '../../schemas/api/readings';
 import type { KeptPhoto, NewRecord } from '../../lib/capture-store';
+import { captureRecords } from '../../words/capture';
 
 /** Records as they are made on the phone. */
 
@@ -46,7 +47,11 @@ export function readingRecord(made: Made, facts: ReadingFacts, supersedes: strin
 }
 
 export type CheckFacts = Pick<CheckInput, 'check' | 'result' | 'reason' | 'note' | 'figures'>;
-export const RESULT_WORDS = { pass: 'passed', fail: 'failed', not_applicable: 'not applicable' } as const;
+export const RESULT_WORDS = {
+  pass: captureRecords.passed,
+  fail: captureRecords.failed,
+  not_applicable: captureRecords.notApplicable,
+} as const;
 
 export const checkLabel = (string: string, facts: Pick<CheckFacts, 'check' | 'result'>): string =>
   `${string}, ${checkDefinition(facts.check).name}: ${RESULT_WORDS[facts.result]}`;
@@ -70,7 +75,7 @@ export function photoRecord(
     record: {
       ...base(made),
       kind: 'photo',
-      label: `${made.string.name}, photo: ${of}`,
+      label: captureRecords.whichPhotoOfSaid(made.string.name, of),
       body: {
         ref: made.ref,
         subject,

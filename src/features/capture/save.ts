@@ -2,8 +2,9 @@ import { newRef } from '../../lib/capture-records';
 import type { CapturePhone } from '../../lib/capture-phone';
 import type { KeptPhoto, NewRecord } from '../../lib/capture-store';
 import type { CaptureSnapshot, CaptureString } from '../../schemas/api/capture';
-import { counted, quantity } from '../../drawings/numbers';
+import { quantity } from '../../drawings/numbers';
 import { photoRecord, type PhotoSubject } from './records';
+import { captureSave } from '../../words/capture';
 
 export const sizeWords = (bytes: number): string =>
   bytes < 1e6 ? quantity(bytes / 1e3, 'kB') : quantity(bytes / 1e6, 'MB', 1);
@@ -42,11 +43,8 @@ export async function keepPhotos(files: readonly File[], taken: Taken): Promise<
   if (records.length > 0) await phone.add(records, photos);
   const empty = files.filter((file) => file.size === 0).length;
   const faults = [
-    ...tooLarge.map(
-      (file) =>
-        `${file.name || 'A photo'} has ${sizeWords(file.size)}; at most ${sizeWords(most)} can be kept. Take it at a lower resolution.`,
-    ),
-    ...(empty > 0 ? [`${counted(empty, 'file')} held nothing. Take the photo again.`] : []),
+    ...tooLarge.map((file) => captureSave.hasAtMostCan(file.name, sizeWords(file.size), sizeWords(most))),
+    ...(empty > 0 ? [captureSave.heldNothingTakeThe(empty)] : []),
   ];
   return faults.length > 0 ? faults.join(' ') : null;
 }

@@ -1,16 +1,16 @@
 import { UNIT_KINDS } from '../../domain/equipment/unit-type';
 import { KIND_LABELS } from '../../components/readings/words';
-import { counted } from '../../drawings/numbers';
 import { siteClock } from '../../components/ui/reader-zone';
 import type { PhoneState } from '../../lib/capture-phone';
 import { tally } from '../../lib/capture-queue';
 import type { CaptureSnapshot, CaptureString } from '../../schemas/api/capture';
 import { typesOf } from './view';
+import { captureWords } from '../../words/capture';
 
 /** "14 units, shutdown-only" */
 export function countAndKind(site: CaptureSnapshot, string: CaptureString): string {
   const kind = typesOf(site, string).unitType?.kind ?? UNIT_KINDS[0];
-  return `${counted(string.units, 'unit')}, ${KIND_LABELS[kind].toLowerCase()}`;
+  return `${captureWords.countedUnitsUnit(string.units)}, ${KIND_LABELS[kind].toLowerCase()}`;
 }
 
 export interface StripWords {
@@ -35,24 +35,21 @@ export function stripWords(state: PhoneState, now: Date, readerZone: string | nu
   const decisions = t.conflicts + t.refused;
   const why =
     link.state === 'signed_out'
-      ? `Your session has ended. Sign in again${all > 0 ? ', then what waits is sent' : ''}; nothing is lost.`
+      ? captureWords.yourSessionHasEnded(all)
       : link.state === 'other_person'
-        ? 'Another person is signed in on this phone by now. Load this page again to see theirs; yours is kept.'
+        ? captureWords.anotherPersonIsSigned
         : unreachableSince
-          ? `No network since ${siteClock(unreachableSince, now, zone, readerZone)}. What you record is kept on this phone and sent when it returns.`
+          ? captureWords.noNetworkSinceWhat(siteClock(unreachableSince, now, zone, readerZone))
           : decisions > 0
             ? decisions === 1
-              ? 'One record wants your decision.'
-              : `${decisions} records want your decision.`
+              ? captureWords.oneRecordWantsYour
+              : captureWords.recordsWantYourDecision(decisions)
             : '';
   return {
-    age: snapshot ? `As of ${siteClock(snapshot.at, now, zone, readerZone)}` : '',
-    waiting: all > 0 ? `${all} waiting` : '',
+    age: snapshot ? captureWords.asOf(siteClock(snapshot.at, now, zone, readerZone)) : '',
+    waiting: all > 0 ? captureWords.allWaiting(all) : '',
     why,
-    others:
-      t.ofOthers > 0
-        ? `${t.ofOthers} waiting from another person: kept on this phone, sent when that person signs in here.`
-        : '',
+    others: t.ofOthers > 0 ? captureWords.waitingFromAnotherPerson(t.ofOthers) : '',
     signIn: link.state === 'signed_out',
     mayTry: link.state === 'unreachable' || (all > decisions && state.sending === null),
   };

@@ -20,6 +20,7 @@ import { StringChecks } from './StringChecks';
 import { useSigning } from './signing';
 import { CellMark } from './CellMark';
 import { MARK_WORDS, checksHeading, checksSentence } from './words';
+import { checksBoard } from '../../words/checks';
 
 interface Props {
   initial: ChecksPage;
@@ -29,11 +30,11 @@ interface Props {
 }
 
 const SHOWN: Record<ChecksView['show'], string> = {
-  all: 'All',
-  open: 'Not signed',
-  blocked: 'Blocked',
-  ready: 'Ready to sign',
-  signed: 'Signed',
+  all: checksBoard.all,
+  open: checksBoard.notSigned,
+  blocked: checksBoard.blocked,
+  ready: checksBoard.readyToSign,
+  signed: checksBoard.signed,
 };
 
 /** The install checks of a site: every string against every check, and what stands in the way of a signature. */
@@ -74,7 +75,7 @@ export function ChecksBoard({ initial, view: first, mayWrite, mayRecordEvidence 
     <>
       <Heading
         crumbs={[
-          { label: 'Commissioning', href: paths.commissioning() },
+          { label: checksBoard.commissioning, href: paths.commissioning() },
           { label: site.name, href: paths.commissioningSite(site.id) },
         ]}
         finding={checksHeading(rows)}
@@ -83,20 +84,20 @@ export function ChecksBoard({ initial, view: first, mayWrite, mayRecordEvidence 
             {sentence.strong && <strong>{sentence.strong}</strong>} {sentence.rest}
           </>
         }
-        actions={<ButtonLink href={paths.capture(site.id)}>Record on the roof</ButtonLink>}
+        actions={<ButtonLink href={paths.capture(site.id)}>{checksBoard.recordOnTheRoof}</ButtonLink>}
       />
-      <NotRead error={error} title="The checks could not be read again" className="mb-4" />
+      <NotRead error={error} title={checksBoard.theChecksCouldNot} className="mb-4" />
       <div className="grid gap-5 xl:grid-cols-[200px_minmax(0,1fr)]">
         <Steps site={site.id} steps={page.steps} here="install_checks" />
         <div className="grid min-w-0 content-start gap-5">
           <Sheet
             id="strings"
-            title="Strings"
+            title={checksBoard.strings}
             flush
             aside={
               <div className="flex flex-wrap items-center gap-x-3 gap-y-1">
                 <Segmented
-                  label="Which strings"
+                  label={checksBoard.whichStrings}
                   options={(['all', 'open', 'blocked', 'ready', 'signed'] as const).map((value) => ({
                     value,
                     label: `${SHOWN[value]} ${counted(rows, value)}`,
@@ -105,14 +106,14 @@ export function ChecksBoard({ initial, view: first, mayWrite, mayRecordEvidence 
                   onChange={(show) => change({ show })}
                 />
                 <ButtonLink href={paths.api.checksCsv(site.id)} download>
-                  Checks as CSV
+                  {checksBoard.checksAsCSV}
                 </ButtonLink>
               </div>
             }
           >
             <div className="mb-2 flex flex-wrap items-end justify-between gap-3">
               <Field
-                label="Find a string, a note or a person"
+                label={checksBoard.findAStringA}
                 className="w-full sm:w-[300px]"
                 type="search"
                 value={view.find}
@@ -122,7 +123,7 @@ export function ChecksBoard({ initial, view: first, mayWrite, mayRecordEvidence 
                 <div className="flex flex-wrap gap-2">
                   {toSign.length < ready.length && (
                     <Button onClick={() => setChosen(new Set(ready.map((r) => r.string.id)))}>
-                      Choose all that are ready
+                      {checksBoard.chooseAllThatAre}
                     </Button>
                   )}
                   <Button
@@ -131,16 +132,16 @@ export function ChecksBoard({ initial, view: first, mayWrite, mayRecordEvidence 
                     onClick={() => void sign(toSign).then(() => setChosen(new Set()))}
                   >
                     {toSign.length === 0
-                      ? 'Sign chosen strings'
+                      ? checksBoard.signChosenStrings
                       : toSign.length === 1
-                        ? `Sign ${toSign[0]?.string.name ?? ''}`
-                        : `Sign ${toSign.length} strings`}
+                        ? checksBoard.signWhich(toSign[0]?.string.name)
+                        : checksBoard.signStrings(toSign.length)}
                   </Button>
                 </div>
               )}
             </div>
             {faults.length > 0 && (
-              <Notice kind="failed" title="Not signed">
+              <Notice kind="failed" title={checksBoard.notSigned}>
                 <ul>
                   {faults.map((f) => (
                     <li key={f}>{f}</li>
@@ -151,12 +152,12 @@ export function ChecksBoard({ initial, view: first, mayWrite, mayRecordEvidence 
             {shown.length === 0 ? (
               <Notice
                 kind="empty"
-                title={rows.length === 0 ? 'No string has slots yet' : 'No string fits what you look for'}
+                title={rows.length === 0 ? checksBoard.noStringHasSlots : checksBoard.noStringFitsWhat}
                 action={
                   rows.length === 0 ? (
-                    <ButtonLink href={paths.asBuilt(site.id)}>Enter the as-built</ButtonLink>
+                    <ButtonLink href={paths.asBuilt(site.id)}>{checksBoard.enterTheAsBuilt}</ButtonLink>
                   ) : (
-                    <Button onClick={() => change({ find: '', show: 'all' })}>Show all</Button>
+                    <Button onClick={() => change({ find: '', show: 'all' })}>{checksBoard.showAll}</Button>
                   )
                 }
               />
@@ -205,11 +206,7 @@ export function ChecksBoard({ initial, view: first, mayWrite, mayRecordEvidence 
               onClose={() => change({ string: '' })}
             />
           )}
-          <Caution strong="A signature says what was checked, not that the string is dead.">
-            DC strings stay dangerous in light. Isolate, lock out and prove dead with a rated meter before you
-            touch anything; local code and the authority having jurisdiction come first; qualified people
-            only.
-          </Caution>
+          <Caution strong={checksBoard.aSignatureSaysWhat}>{checksBoard.dcStringsStayDangerous}</Caution>
         </div>
       </div>
     </>

@@ -8,6 +8,7 @@ import { uploadFile } from '../../lib/upload';
 import { PHOTO_TYPES, type AttachmentItem } from '../../schemas/api/attachments';
 import type { PairInput } from '../../schemas/api/equipment';
 import { paths } from '../../schemas/paths';
+import { evidence } from '../../words/checks';
 
 interface Props {
   /** Of the site where the pair was found: the document is kept with it. */
@@ -28,7 +29,7 @@ export function Evidence({ site, pair, onRecorded }: Props) {
   if (!open)
     return (
       <div className="mt-2">
-        <Button onClick={() => setOpen(true)}>Record the document that allows this pair</Button>
+        <Button onClick={() => setOpen(true)}>{evidence.recordTheDocumentThat}</Button>
       </div>
     );
   const field = (key: keyof typeof form, label: string, hint?: string) => (
@@ -53,7 +54,7 @@ export function Evidence({ site, pair, onRecorded }: Props) {
           ref: newRef(),
           subject: 'connector_pair',
           subjectRef: id,
-          name: file.name.slice(0, 200) || 'Document',
+          name: file.name.slice(0, 200) || evidence.document,
           at: new Date().toISOString(),
         };
         await uploadFile<AttachmentItem>(
@@ -79,18 +80,15 @@ export function Evidence({ site, pair, onRecorded }: Props) {
         void save();
       }}
     >
-      <p className="text-ink-2">
-        {pair.words} Both makers must stand by it; that the halves click together proves nothing. It counts
-        for every string of the organisation.
-      </p>
+      <p className="text-ink-2">{evidence.bothMakersMustStand(pair.words)}</p>
       <div className="grid gap-3 sm:grid-cols-3">
-        {field('document', 'Document')}
-        {field('edition', 'Edition or date')}
-        {field('page', 'Page or table')}
+        {field('document', evidence.document)}
+        {field('edition', evidence.editionOrDate)}
+        {field('page', evidence.pageOrTable)}
       </div>
-      {field('note', 'Note')}
+      {field('note', evidence.note)}
       <label className="block">
-        <span className="mb-1 block font-medium">The document itself, as PDF or picture</span>
+        <span className="mb-1 block font-medium">{evidence.theDocumentItselfAs}</span>
         <input
           type="file"
           accept={`application/pdf,${PHOTO_TYPES}`}
@@ -101,18 +99,20 @@ export function Evidence({ site, pair, onRecorded }: Props) {
       {refused && (
         <Notice
           kind="failed"
-          title={recorded ? 'The pair is recorded, its document is not' : 'Not recorded'}
-          action={recorded && <Button onClick={() => void onRecorded()}>Leave the document out</Button>}
+          title={recorded ? evidence.thePairIsRecorded : evidence.notRecorded}
+          action={
+            recorded && <Button onClick={() => void onRecorded()}>{evidence.leaveTheDocumentOut}</Button>
+          }
         >
           {refused.message}
         </Notice>
       )}
       <div className="flex flex-wrap gap-2">
         <Button type="submit" weight="primary" disabled={busy}>
-          Record the evidence
+          {evidence.recordTheEvidence}
         </Button>
         <Button onClick={() => setOpen(false)} disabled={busy}>
-          Cancel
+          {evidence.cancel}
         </Button>
       </div>
     </form>

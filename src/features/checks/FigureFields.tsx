@@ -3,6 +3,7 @@ import { Choice } from '../../components/ui/Choice';
 import { Field } from '../../components/ui/Field';
 import { Segmented } from '../../components/ui/Segmented';
 import type { CaptureSnapshot } from '../../schemas/api/capture';
+import { figureFields } from '../../words/checks';
 
 /** What was typed or chosen so far, as text; empty: nothing. */
 export type Typed = Readonly<Record<string, string>>;
@@ -63,7 +64,7 @@ export function FigureFields({ figures, typed, faults, connectors, onType }: Pro
             value={value}
             error={faults[f.key]}
             options={[
-              { value: '', label: 'not chosen' },
+              { value: '', label: figureFields.notChosen },
               ...connectors
                 .filter((c) => !c.archived || c.id === value)
                 .map((c) => ({ value: c.id, label: `${c.name} (${c.maker} ${c.family})` })),

@@ -4,6 +4,7 @@ import { SiteTime } from '../../components/ui/Time';
 import { CellMark } from './CellMark';
 import type { Status, StringRow } from './rows';
 import { MARK_WORDS, STATUS_WORDS } from './words';
+import { matrix } from '../../words/checks';
 
 interface Props {
   rows: readonly StringRow[];
@@ -47,16 +48,16 @@ export function Matrix({ rows, view, open, now, timeZone, onOpen, onSort, chosen
   return (
     <div className="overflow-x-auto">
       <table className="w-full border-collapse text-left">
-        <caption className="sr-only">Install checks by string</caption>
+        <caption className="sr-only">{matrix.installChecksByString}</caption>
         <thead>
           <tr className="border-b border-rule align-bottom text-sm text-ink-2">
             {chosen && (
               <th scope="col" className="w-[36px] pb-2 font-medium">
-                <span className="sr-only">Chosen for signing</span>
+                <span className="sr-only">{matrix.chosenForSigning}</span>
               </th>
             )}
             <th scope="col" aria-sort={sorted('name')} className="pb-1 pr-3 font-medium">
-              {sortable('name', 'String')}
+              {sortable('name', matrix.string)}
             </th>
             {first.cells.map((cell) => (
               <th
@@ -70,17 +71,17 @@ export function Matrix({ rows, view, open, now, timeZone, onOpen, onSort, chosen
               </th>
             ))}
             <th scope="col" className="pb-2.5 font-medium lg:hidden">
-              Checks
+              {matrix.checks}
             </th>
             <th
               scope="col"
               aria-sort={sorted('recorded')}
               className="hidden pb-1 pl-3 text-right font-medium sm:table-cell"
             >
-              {sortable('recorded', 'Done')}
+              {sortable('recorded', matrix.done)}
             </th>
             <th scope="col" aria-sort={sorted('blocks')} className="pb-1 pl-4 font-medium">
-              {sortable('blocks', 'Stands')}
+              {sortable('blocks', matrix.stands)}
             </th>
           </tr>
         </thead>
@@ -103,7 +104,7 @@ export function Matrix({ rows, view, open, now, timeZone, onOpen, onSort, chosen
                           checked={chosen.has(string.id)}
                           onChange={(event) => onChoose(string.id, event.target.checked)}
                         />
-                        <span className="sr-only">Sign {string.name}</span>
+                        <span className="sr-only">{matrix.signWhich(string.name)}</span>
                       </label>
                     )}
                   </td>
@@ -135,7 +136,7 @@ export function Matrix({ rows, view, open, now, timeZone, onOpen, onSort, chosen
                   <button
                     type="button"
                     onClick={() => onOpen(string.name)}
-                    aria-label={`${string.name}: ${state.recorded} of ${state.asked} checks recorded`}
+                    aria-label={matrix.ofChecksRecorded(string.name, state.recorded, state.asked)}
                     className="flex min-h-[44px] flex-wrap items-center gap-[2px] py-1"
                   >
                     {cells.map((cell) => (
@@ -151,7 +152,7 @@ export function Matrix({ rows, view, open, now, timeZone, onOpen, onSort, chosen
                     <Tag tone={TONES[status]}>{STATUS_WORDS[status]}</Tag>
                     {string.signOff && (
                       <span className="hidden text-sm text-ink-2 xl:inline">
-                        {string.signOff.stale ? 'signature no longer holds' : string.signOff.person}
+                        {string.signOff.stale ? matrix.signatureNoLongerHolds : string.signOff.person}
                         {!string.signOff.stale && (
                           <>
                             , <SiteTime at={string.signOff.at} now={now} timeZone={timeZone} />

@@ -11,6 +11,7 @@ import {
   type AttachmentQuery,
 } from '../../schemas/api/attachments';
 import { paths } from '../../schemas/paths';
+import { checksPhotos } from '../../words/checks';
 
 interface Props {
   photos: readonly AttachmentItem[];
@@ -58,7 +59,7 @@ export function Photos({ photos, of, now, timeZone }: Props) {
             <figcaption className="mt-2 text-sm text-ink-2">
               {of}. {photo.person}, <SiteTime at={photo.at} now={now} timeZone={timeZone} />.
               {photo.note ? ` ${photo.note}` : ''}
-              {photo.placeKept ? ' The picture carries its place.' : ''}
+              {photo.placeKept ? checksPhotos.thePictureCarriesIts : ''}
             </figcaption>
             {photos.length > 1 && (
               <div className="mt-3 flex justify-between">
@@ -69,7 +70,7 @@ export function Photos({ photos, of, now, timeZone }: Props) {
                     className="target rounded border border-rule px-4"
                     onClick={() => setShown(((shown ?? 0) + step + photos.length) % photos.length)}
                   >
-                    {step < 0 ? 'Previous photo' : 'Next photo'}
+                    {step < 0 ? checksPhotos.previousPhoto : checksPhotos.nextPhoto}
                   </button>
                 ))}
               </div>
@@ -107,7 +108,7 @@ export function AddPhotos({ site, string, subject, subjectRef, label, keepPlace,
   const send = async (one: Sending) => {
     if (one.file.size > PHOTO_MAX_BYTES) {
       const limit = Math.round(PHOTO_MAX_BYTES / 1024 / 1024);
-      patch(one.ref, { fault: `It is larger than ${limit} MB. Take it with a lower resolution.` });
+      patch(one.ref, { fault: checksPhotos.itIsLargerThan(limit) });
       return;
     }
     patch(one.ref, { fault: null, share: 0 });
@@ -116,7 +117,7 @@ export function AddPhotos({ site, string, subject, subjectRef, label, keepPlace,
       subject,
       subjectRef,
       string,
-      name: one.file.name.slice(0, 200) || 'Photo',
+      name: one.file.name.slice(0, 200) || checksPhotos.photo,
       at: new Date(Math.min(one.file.lastModified || Date.now(), Date.now())).toISOString(),
       keepPlace: keepPlace ? 'yes' : 'no',
     };
@@ -162,7 +163,7 @@ export function AddPhotos({ site, string, subject, subjectRef, label, keepPlace,
                 <progress
                   value={s.share}
                   max={1}
-                  aria-label={`${s.file.name} sent`}
+                  aria-label={checksPhotos.fileSent(s.file.name)}
                   className="h-2 w-[120px]"
                 />
               ) : (
@@ -171,14 +172,14 @@ export function AddPhotos({ site, string, subject, subjectRef, label, keepPlace,
                     {s.fault}
                   </span>
                   <button type="button" className="target px-2 underline" onClick={() => void send(s)}>
-                    Send again
+                    {checksPhotos.sendAgain}
                   </button>
                   <button
                     type="button"
                     className="target px-2 underline"
                     onClick={() => setSending((all) => all.filter((x) => x.ref !== s.ref))}
                   >
-                    Leave it out
+                    {checksPhotos.leaveItOut}
                   </button>
                 </>
               )}

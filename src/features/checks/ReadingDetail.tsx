@@ -15,6 +15,7 @@ import { paths } from '../../schemas/paths';
 import { AddPhotos, Photos } from './Photos';
 import type { ReadingHere, ReadingRow } from './readings-rows';
 import { OUTCOME_WORDS } from './readings-words';
+import { readingDetail } from '../../words/checks';
 
 interface Props {
   page: ChecksPage;
@@ -35,16 +36,18 @@ export function ReadingDetail({ page, row, mayWrite, onChanged, onClose }: Props
       title={`${row.string.name} ${STAGE_WORDS[row.stage]}: ${OUTCOME_WORDS[row.outcome]}`}
       aside={
         <span className="flex flex-wrap gap-2">
-          <ButtonLink href={paths.string(site.id, row.string.id)}>Open {row.string.name}</ButtonLink>
-          <Button onClick={onClose}>Close</Button>
+          <ButtonLink href={paths.string(site.id, row.string.id)}>
+            {readingDetail.openWhich(row.string.name)}
+          </ButtonLink>
+          <Button onClick={onClose}>{readingDetail.close}</Button>
         </span>
       }
     >
       {readings.length === 0 && (
         <Notice
           kind="empty"
-          title="Nothing was read here"
-          action={<ButtonLink href={paths.capture(site.id)}>Record on the roof</ButtonLink>}
+          title={readingDetail.nothingWasReadHere}
+          action={<ButtonLink href={paths.capture(site.id)}>{readingDetail.recordOnTheRoof}</ButtonLink>}
         />
       )}
       <ul className="divide-y divide-rule-faint">
@@ -52,7 +55,9 @@ export function ReadingDetail({ page, row, mayWrite, onChanged, onClose }: Props
           <Reading key={r.ref} page={page} row={row} reading={r} mayWrite={mayWrite} onChanged={onChanged} />
         ))}
       </ul>
-      {row.earth && <p className="mt-2 text-ink-2">Readings to earth together: {row.earth.words}</p>}
+      {row.earth && (
+        <p className="mt-2 text-ink-2">{readingDetail.readingsToEarthTogether(row.earth.words)}</p>
+      )}
       {row.now && row.between && mayWrite && (
         <JudgeAgain page={page} row={row} reading={row.between} onChanged={onChanged} />
       )}
@@ -87,21 +92,24 @@ function Reading({
         {finding && <span className="font-normal">. {finding.headline}</span>}
       </h3>
       <p className="text-ink-2">
-        {finding && `Expected: ${finding.expected}. `}
+        {finding && readingDetail.expectedExpected(finding.expected)}
         {finding?.expectedLowV !== null && finding?.expectedHighV !== null && finding
-          ? `That reads ${volts(finding.expectedLowV)} to ${volts(finding.expectedHighV)}. `
+          ? readingDetail.thatReadsTo(finding.expectedLowV, finding.expectedHighV)
           : ''}
-        {finding && finding.siblings.length > 0 && `Compared with ${finding.siblings.join(', ')}. `}
-        {reading.light.charAt(0).toUpperCase() + reading.light.slice(1)} light
-        {reading.meterMode === 'low_impedance' ? ', low-impedance input' : ''}
-        {reading.commanded === 'unknown' ? '' : `, ${reading.commanded}`}.
+        {finding && finding.siblings.length > 0 && readingDetail.comparedWith(finding.siblings.join(', '))}
+        {readingDetail.charAtLightMeterModeCommanded(
+          reading.light.charAt(0),
+          reading.light.slice(1),
+          reading.meterMode,
+          reading.commanded,
+        )}
       </p>
       {finding && finding.likely.length > 1 && (
         <ol className="mt-1 text-ink-2">
           {finding.likely.map((h) => (
             <li key={`${h.kind} ${h.count}`} className="flex justify-between gap-4 sm:max-w-[560px]">
               <span>{h.words}</span>
-              <span>{h.probability < 0.005 ? `under ${percent(0.01)}` : percent(h.probability)}</span>
+              <span>{h.probability < 0.005 ? readingDetail.under : percent(h.probability)}</span>
             </li>
           ))}
         </ol>
@@ -123,7 +131,7 @@ function Reading({
             string={row.string.id}
             subject="meter_reading"
             subjectRef={reading.ref}
-            label="Add photos"
+            label={readingDetail.addPhotos}
             keepPlace={false}
             onStored={onChanged}
           />
@@ -174,10 +182,14 @@ function JudgeAgain({
     <div className="mt-2">
       <Notice
         kind="stale"
-        title={`With ${now.siblings.join(', ')}, measured beside it: ${OUTCOME_WORDS[now.outcome]}. ${now.headline}.`}
+        title={readingDetail.withMeasuredBesideIt(
+          now.siblings.join(', '),
+          OUTCOME_WORDS[now.outcome],
+          now.headline,
+        )}
         action={
           <Button disabled={busy} onClick={() => void save()}>
-            Keep this judgement
+            {readingDetail.keepThisJudgement}
           </Button>
         }
       >

@@ -30,6 +30,7 @@ import {
   type ReadingRow,
 } from './readings-rows';
 import { OUTCOME_WORDS, readingsHeading, readingsSentence } from './readings-words';
+import { readingsBoard } from '../../words/meter-readings';
 
 interface Props {
   initial: ChecksPage;
@@ -79,7 +80,7 @@ export function ReadingsBoard({ initial, view: first, mayWrite }: Props) {
   const columns: Column<ReadingRow>[] = [
     {
       key: 'name',
-      label: 'String',
+      label: readingsBoard.string,
       sortable: true,
       cell: (r) => (
         <button
@@ -95,13 +96,13 @@ export function ReadingsBoard({ initial, view: first, mayWrite }: Props) {
     },
     {
       key: 'voltage',
-      label: '+ to −',
+      label: readingsBoard.to,
       numeric: true,
       cell: (r) => (r.between ? volts(r.between.voltage) : '–'),
     },
     {
       key: 'band',
-      label: 'Against what is expected',
+      label: readingsBoard.againstWhatIsExpected,
       from: 'md',
       cell: (r) =>
         r.between && (
@@ -110,7 +111,7 @@ export function ReadingsBoard({ initial, view: first, mayWrite }: Props) {
     },
     {
       key: 'earth',
-      label: '+ and − to earth',
+      label: readingsBoard.andToEarth,
       numeric: true,
       from: 'lg',
       cell: (r) =>
@@ -120,7 +121,7 @@ export function ReadingsBoard({ initial, view: first, mayWrite }: Props) {
     },
     {
       key: 'outcome',
-      label: 'What it means',
+      label: readingsBoard.whatItMeans,
       sortable: true,
       cell: (r) => (
         <span className="flex flex-wrap items-center gap-x-2 gap-y-1">
@@ -133,7 +134,7 @@ export function ReadingsBoard({ initial, view: first, mayWrite }: Props) {
     },
     {
       key: 'at',
-      label: 'Read',
+      label: readingsBoard.read,
       sortable: true,
       from: 'lg',
       className: 'whitespace-nowrap text-ink-2',
@@ -144,7 +145,7 @@ export function ReadingsBoard({ initial, view: first, mayWrite }: Props) {
     <>
       <Heading
         crumbs={[
-          { label: 'Commissioning', href: paths.commissioning() },
+          { label: readingsBoard.commissioning, href: paths.commissioning() },
           { label: site.name, href: paths.commissioningSite(site.id) },
         ]}
         finding={readingsHeading(rows)}
@@ -153,37 +154,37 @@ export function ReadingsBoard({ initial, view: first, mayWrite }: Props) {
             {sentence.strong && <strong>{sentence.strong}</strong>} {sentence.rest}
           </>
         }
-        actions={<ButtonLink href={paths.capture(site.id)}>Record on the roof</ButtonLink>}
+        actions={<ButtonLink href={paths.capture(site.id)}>{readingsBoard.recordOnTheRoof}</ButtonLink>}
       />
-      <NotRead error={error} title="The readings could not be read again" className="mb-4" />
+      <NotRead error={error} title={readingsBoard.theReadingsCouldNot} className="mb-4" />
       <div className="grid gap-5 xl:grid-cols-[200px_minmax(0,1fr)]">
         <Steps site={site.id} steps={page.steps} here="meter_readings" />
         <div className="grid min-w-0 content-start gap-5">
           <Sheet
             id="strings"
-            title="Strings by stage"
+            title={readingsBoard.stringsByStage}
             flush
             aside={
               <div className="flex flex-wrap items-center gap-x-3 gap-y-1">
                 <Segmented
-                  label="Which readings"
+                  label={readingsBoard.whichReadings}
                   options={[
-                    { value: 'all', label: `All ${here.length}` },
-                    { value: 'odd', label: `Not as expected ${countOf(here, 'odd')}` },
-                    { value: 'unread', label: `Not read ${countOf(here, 'unread')}` },
+                    { value: 'all', label: readingsBoard.allHere(here.length) },
+                    { value: 'odd', label: readingsBoard.notAsExpected(countOf(here, 'odd')) },
+                    { value: 'unread', label: readingsBoard.notRead(countOf(here, 'unread')) },
                   ]}
                   value={view.show}
                   onChange={(show) => change({ show })}
                 />
                 <ButtonLink href={paths.api.readingsCsv(site.id)} download>
-                  Readings as CSV
+                  {readingsBoard.readingsAsCSV}
                 </ButtonLink>
               </div>
             }
           >
             <div className="mb-2 flex flex-wrap items-end justify-between gap-3">
               <Field
-                label="Find a string, a meaning or a person"
+                label={readingsBoard.findAStringA}
                 className="w-full sm:w-[300px]"
                 type="search"
                 value={view.find}
@@ -191,10 +192,10 @@ export function ReadingsBoard({ initial, view: first, mayWrite }: Props) {
               />
               {stages.length > 1 && (
                 <Segmented
-                  label="Stage"
+                  label={readingsBoard.stage}
                   options={[
                     ...stages.map((value) => ({ value, label: STAGE_WORDS[value] })),
-                    { value: 'all' as const, label: 'every stage' },
+                    { value: 'all' as const, label: readingsBoard.everyStage },
                   ]}
                   value={stageShown(rows, view)}
                   onChange={(stage) => change({ stage })}
@@ -202,7 +203,7 @@ export function ReadingsBoard({ initial, view: first, mayWrite }: Props) {
               )}
             </div>
             <Table
-              caption="Meter readings by string and stage"
+              caption={readingsBoard.meterReadingsByString}
               columns={columns}
               rows={shown}
               rowKey={(r) => r.key}
@@ -213,21 +214,18 @@ export function ReadingsBoard({ initial, view: first, mayWrite }: Props) {
               empty={
                 <Notice
                   kind="empty"
-                  title={rows.length === 0 ? 'No string has slots yet' : 'No reading fits what you look for'}
+                  title={rows.length === 0 ? readingsBoard.noStringHasSlots : readingsBoard.noReadingFitsWhat}
                   action={
                     rows.length > 0 && (
                       <Button onClick={() => change({ find: '', show: 'all', stage: 'all' })}>
-                        Show all
+                        {readingsBoard.showAll}
                       </Button>
                     )
                   }
                 />
               }
             />
-            <p className="mt-3 text-sm text-ink-2">
-              The wash is what should be at that stage, two standard deviations to either side; dashes are
-              other explanations. Expected values are according to the types entered.
-            </p>
+            <p className="mt-3 text-sm text-ink-2">{readingsBoard.theWashIsWhat}</p>
           </Sheet>
           {open && (
             <ReadingDetail

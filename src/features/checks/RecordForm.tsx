@@ -12,6 +12,7 @@ import { paths } from '../../schemas/paths';
 import { FigureFields, type Typed } from './FigureFields';
 import { begun, filled } from './typed';
 import { figureText, type Cell, type StringRow } from './rows';
+import { recordForm } from '../../words/checks';
 
 interface Props {
   sheet: CaptureSnapshot;
@@ -21,9 +22,9 @@ interface Props {
   onCancel: () => void;
 }
 const RESULTS: { value: CheckResult; label: string }[] = [
-  { value: 'pass', label: 'Pass' },
-  { value: 'fail', label: 'Fail' },
-  { value: 'not_applicable', label: 'Not applicable' },
+  { value: 'pass', label: recordForm.pass },
+  { value: 'fail', label: recordForm.fail },
+  { value: 'not_applicable', label: recordForm.notApplicable },
 ];
 
 /** Records one check. Somebody else’s record made meanwhile is shown beside it, and nothing typed is lost. */
@@ -88,7 +89,7 @@ export function RecordForm({ sheet, row, cell, onSaved, onCancel }: Props) {
     >
       <Segmented
         look="bold"
-        label={`${check.name}: how it stands`}
+        label={recordForm.howItStands(check.name)}
         options={RESULTS}
         value={result}
         onChange={setResult}
@@ -104,7 +105,7 @@ export function RecordForm({ sheet, row, cell, onSaved, onCancel }: Props) {
       )}
       {result !== 'pass' && (
         <Field
-          label={wantsReason ? 'Why it does not apply' : 'What is wrong'}
+          label={wantsReason ? recordForm.whyItDoesNot : recordForm.whatIsWrong}
           maxLength={500}
           value={reason}
           error={
@@ -115,7 +116,7 @@ export function RecordForm({ sheet, row, cell, onSaved, onCancel }: Props) {
       )}
       <div>
         <label htmlFor={noteId} className="mb-1 block font-medium">
-          Note
+          {recordForm.note}
         </label>
         <textarea
           id={noteId}
@@ -128,37 +129,38 @@ export function RecordForm({ sheet, row, cell, onSaved, onCancel }: Props) {
       </div>
       {result === 'pass' && judged && judged.words.length > 0 && (
         <p role="status" className="rounded bg-rust-wash px-3 py-2 text-rust-ink">
-          {judged.contradicts ? 'These figures contradict a pass. ' : ''}
+          {judged.contradicts ? recordForm.theseFiguresContradictA : ''}
           {judged.words.join(' ')} {judged.remedy}
         </p>
       )}
       {theirs && (
         <Notice
           kind="stale"
-          title={`${theirs.person} recorded this meanwhile: ${theirs.result.replace('_', ' ')}`}
+          title={recordForm.recordedThisMeanwhile(theirs.person, theirs.result.replace('_', ' '))}
         >
-          {[theirs.reason, theirs.note, figureText({ check, record: theirs }, row.context.connectors)]
-            .filter(Boolean)
-            .join('. ') || 'No note'}
-          . What you typed is still here.
+          {recordForm.whatYouTypedIs(
+            [theirs.reason, theirs.note, figureText({ check, record: theirs }, row.context.connectors)]
+              .filter(Boolean)
+              .join('. '),
+          )}
         </Notice>
       )}
       {refused && !theirs && (
-        <Notice kind="failed" title="Not saved">
+        <Notice kind="failed" title={recordForm.notSaved}>
           {refused.message}
         </Notice>
       )}
       <div className="flex flex-wrap gap-2">
         <Button type="submit" weight="primary" disabled={busy}>
-          {theirs ? 'Save mine in place of theirs' : 'Save the check'}
+          {theirs ? recordForm.saveMineInPlace : recordForm.saveTheCheck}
         </Button>
         {theirs && (
           <Button onClick={() => void onSaved(theirs)} disabled={busy}>
-            Keep theirs
+            {recordForm.keepTheirs}
           </Button>
         )}
         <Button onClick={onCancel} disabled={busy}>
-          Cancel
+          {recordForm.cancel}
         </Button>
       </div>
     </form>

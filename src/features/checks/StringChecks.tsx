@@ -13,6 +13,7 @@ import { RecordForm } from './RecordForm';
 import { figureText, type Cell, type StringRow } from './rows';
 import type { Signing } from './signing';
 import { MARK_WORDS } from './words';
+import { stringChecks } from '../../words/checks';
 
 interface Props {
   page: ChecksPage;
@@ -34,11 +35,13 @@ export function StringChecks(props: Props) {
   return (
     <Sheet
       id="string"
-      title={`${string.name}: ${state.recorded} of ${state.asked} checks recorded`}
+      title={stringChecks.ofChecksRecorded(string.name, state.recorded, state.asked)}
       aside={
         <span className="flex flex-wrap items-center gap-2">
-          <ButtonLink href={paths.string(page.sheet.site.id, string.id)}>Open {string.name}</ButtonLink>
-          <Button onClick={onClose}>Close</Button>
+          <ButtonLink href={paths.string(page.sheet.site.id, string.id)}>
+            {stringChecks.openWhich(string.name)}
+          </ButtonLink>
+          <Button onClick={onClose}>{stringChecks.close}</Button>
         </span>
       }
     >
@@ -54,30 +57,26 @@ export function StringChecks(props: Props) {
       <div className="mb-2 flex flex-wrap items-center gap-3">
         {string.signOff && (
           <p>
-            Signed by {string.signOff.person},{' '}
+            {stringChecks.signedBy(string.signOff.person)}
             <SiteTime at={string.signOff.at} now={page.sheet.at} timeZone={timeZone} zone />.{' '}
             {string.signOff.stale && (
               <strong className="font-semibold text-rust-ink">
-                Something was recorded since: the signature no longer holds.
+                {stringChecks.somethingWasRecordedSince}
               </strong>
             )}
           </p>
         )}
         {mayWrite && status === 'ready' && (
           <Button weight="primary" disabled={signing.busy} onClick={() => void signing.sign([row])}>
-            Sign {string.name} off
+            {stringChecks.signOff(string.name)}
           </Button>
         )}
-        {missing > 0 && (
-          <p className="text-ink-2">
-            {missing} {missing === 1 ? 'check' : 'checks'} still to record before it can be signed.
-          </p>
-        )}
+        {missing > 0 && <p className="text-ink-2">{stringChecks.stillToRecordBefore(missing)}</p>}
       </div>
       {status === 'ready' && state.remarks.length > 0 && (
         <details className="mb-3 text-ink-2">
           <summary className="target inline-flex cursor-pointer items-center">
-            Worth knowing before signing ({state.remarks.length})
+            {stringChecks.worthKnowingBeforeSigning(state.remarks.length)}
           </summary>
           <ul className="list-disc pl-5">
             {state.remarks.map((r) => (
@@ -94,7 +93,7 @@ export function StringChecks(props: Props) {
             checked={keepPlace}
             onChange={(event) => setKeepPlace(event.target.checked)}
           />
-          Photos keep the place that the camera wrote
+          {stringChecks.photosKeepThePlace}
         </label>
       )}
       <ol className="divide-y divide-rule-faint border-t border-rule-faint">
@@ -154,9 +153,7 @@ function CheckItem({
           />
           {pair && mayRecordEvidence && <Evidence site={site.id} pair={pair} onRecorded={onChanged} />}
           {pair && !mayRecordEvidence && (
-            <p className="mt-1 text-sm text-ink-2">
-              A manager can record the document that allows this pair, if there is one.
-            </p>
+            <p className="mt-1 text-sm text-ink-2">{stringChecks.aManagerCanRecord}</p>
           )}
           {editing && (
             <>
@@ -180,7 +177,7 @@ function CheckItem({
       {mayWrite && !editing && (
         <div className="flex flex-none flex-wrap items-start gap-2 pl-[34px] lg:max-w-[320px] lg:justify-end lg:pl-0">
           <Button onClick={() => setEditing(true)}>
-            {record ? 'Record again' : 'Record'}
+            {record ? stringChecks.recordAgain : stringChecks.record}
             <span className="sr-only">: {check.name}</span>
           </Button>
           {record && (
@@ -189,7 +186,7 @@ function CheckItem({
               string={row.string.id}
               subject="install_check"
               subjectRef={record.ref}
-              label="Add photos"
+              label={stringChecks.addPhotos}
               keepPlace={keepPlace}
               onStored={onChanged}
             />

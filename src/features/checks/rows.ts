@@ -6,6 +6,7 @@ import { signOffState, type SignOffState } from '../../domain/commissioning/chec
 import type { AttachmentItem } from '../../schemas/api/attachments';
 import type { CaptureString } from '../../schemas/api/capture';
 import type { ChecksPage, ChecksView } from '../../schemas/api/checks-page';
+import { checksRows } from '../../words/checks';
 
 /** Strings with their checks as the desk shows them. */
 
@@ -118,7 +119,7 @@ export function figureText(
       if (f.kind === 'number') return [`${f.name} ${String(value).replace('-', '−')}\u00a0${f.unit}`];
       if (f.kind === 'choice')
         return [`${f.name}: ${f.options.find((o) => o.value === value)?.words ?? String(value)}`];
-      return [`${f.name}: ${connectors.find((c) => c.id === value)?.name ?? 'a type that is gone'}`];
+      return [`${f.name}: ${connectors.find((c) => c.id === value)?.name ?? checksRows.aTypeThatIs}`];
     })
     .join(', ');
 }

@@ -2,10 +2,10 @@ import { Sheet } from '../../components/ui/Sheet';
 import { Notice } from '../../components/ui/Notice';
 import { SiteTime } from '../../components/ui/Time';
 import { RollCallCurve } from '../../drawings/RollCallCurve';
-import { counted } from '../../drawings/numbers';
 import type { RollCallPage } from '../../schemas/api/roll-call';
 import { curveOf, type RollTally } from './tally';
 import type { RollCallOutlook } from './outlook';
+import { curveSheet } from '../../words/commissioning';
 
 interface Props {
   page: RollCallPage;
@@ -20,11 +20,9 @@ export function CurveSheet({ page, tally, now, outlook }: Props) {
   if (!run) {
     if (tally.roster === 0) return null;
     return (
-      <Sheet id="curve" title="Roll call">
-        <Notice kind="empty" title="The curve begins when somebody starts the roll call">
-          {tally.heard > 0
-            ? `${counted(tally.heard, 'unit')} answered before any roll call: a logger hears what speaks by itself.`
-            : 'Each unit that answers is one step of it.'}
+      <Sheet id="curve" title={curveSheet.rollCall}>
+        <Notice kind="empty" title={curveSheet.theCurveBeginsWhen}>
+          {tally.heard > 0 ? curveSheet.answeredBeforeAnyRoll(tally.heard) : curveSheet.eachUnitThatAnswers}
         </Notice>
       </Sheet>
     );
@@ -44,18 +42,19 @@ export function CurveSheet({ page, tally, now, outlook }: Props) {
   return (
     <Sheet
       id="curve"
-      title="Roll call"
+      title={curveSheet.rollCall}
       flush
       aside={
         <>
-          started <SiteTime at={run.startedAt} now={page.at} timeZone={site.timeZone} zone />
+          {curveSheet.started}
+          <SiteTime at={run.startedAt} now={page.at} timeZone={site.timeZone} zone />
           {run.stoppedAt ? (
             <>
-              {' '}
-              · stopped <SiteTime at={run.stoppedAt} now={page.at} timeZone={site.timeZone} />
+              {curveSheet.stopped}
+              <SiteTime at={run.stoppedAt} now={page.at} timeZone={site.timeZone} />
             </>
           ) : (
-            page.gateways.length > 0 && ` · gateway ${listening} of ${page.gateways.length} listening`
+            page.gateways.length > 0 && curveSheet.gatewayOfListening(listening, page.gateways.length)
           )}
         </>
       }
@@ -67,9 +66,7 @@ export function CurveSheet({ page, tally, now, outlook }: Props) {
         <RollCallCurve {...drawn} width={360} height={230} />
       </div>
       {curve.before > 0 && (
-        <p className="mt-2 text-sm text-ink-2">
-          {counted(curve.before, 'unit')} had answered before this start: the curve stands on them.
-        </p>
+        <p className="mt-2 text-sm text-ink-2">{curveSheet.hadAnsweredBeforeThis(curve.before)}</p>
       )}
     </Sheet>
   );

@@ -4,6 +4,7 @@ import { Tag } from '../../components/ui/Tag';
 import { api, ApiError } from '../../lib/api';
 import { paths } from '../../schemas/paths';
 import type { StepNow } from '../../schemas/api/commissioning';
+import { commissioningGaps } from '../../words/commissioning';
 
 interface Props {
   site: string;
@@ -22,10 +23,12 @@ export function Gaps({ site, gaps, mayAccept, onAccepted }: Props) {
           <div className="flex flex-wrap items-center justify-between gap-x-4 gap-y-1">
             <span className="min-w-0">{gap.words}</span>
             {gap.accepted ? (
-              <Tag tone="outline">accepted as it is</Tag>
+              <Tag tone="outline">{commissioningGaps.acceptedAsItIs}</Tag>
             ) : (
               mayAccept &&
-              asked !== gap.key && <Button onClick={() => setAsked(gap.key)}>Accept as it is</Button>
+              asked !== gap.key && (
+                <Button onClick={() => setAsked(gap.key)}>{commissioningGaps.acceptAsItIs}</Button>
+              )
             )}
           </div>
           {asked === gap.key && (
@@ -80,7 +83,7 @@ function Reason({
       }}
     >
       <label htmlFor={`reason-${gap}`} className="mb-1 block font-medium">
-        Why this may stand open
+        {commissioningGaps.whyThisMayStand}
       </label>
       <textarea
         id={`reason-${gap}`}
@@ -97,13 +100,13 @@ function Reason({
         role={fault ? 'alert' : undefined}
         className={`mt-1 text-sm ${fault ? 'font-medium text-rust-ink' : 'text-ink-2'}`}
       >
-        {fault ?? 'Your name, the time and this reason go into the handover pack.'}
+        {fault ?? commissioningGaps.yourNameTheTime}
       </p>
       <div className="mt-2 flex gap-2">
         <Button type="submit" weight="primary" disabled={busy}>
-          Accept in my name
+          {commissioningGaps.acceptInMyName}
         </Button>
-        <Button onClick={onCancel}>Leave it open</Button>
+        <Button onClick={onCancel}>{commissioningGaps.leaveItOpen}</Button>
       </div>
     </form>
   );

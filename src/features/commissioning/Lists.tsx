@@ -5,12 +5,13 @@ import { Button, ButtonLink } from '../../components/ui/Button';
 import { Notice } from '../../components/ui/Notice';
 import { Sheet } from '../../components/ui/Sheet';
 import { Table, type Column } from '../../components/ui/Table';
-import { counted, decibelMilliwatts } from '../../drawings/numbers';
+import { decibelMilliwatts } from '../../drawings/numbers';
 import { clockOrDate, fullTime } from '../../drawings/times';
 import { paths } from '../../schemas/paths';
 import type { RollCallPage } from '../../schemas/api/roll-call';
 import type { GatewayTally, RollTally, RollUnit, UnknownUnit } from './tally';
 import { nearWords } from './words';
+import { lists } from '../../words/commissioning';
 
 const SHOWN_AT_FIRST = 30;
 
@@ -33,59 +34,59 @@ export function MissingSheet({
   const columns: Column<RollUnit>[] = [
     {
       key: 'string',
-      label: 'String',
+      label: lists.string,
       cell: (u) => (
         <a className="font-semibold hover:underline" href={paths.string(siteId, u.stringId)}>
           {u.stringName}
         </a>
       ),
     },
-    { key: 'position', label: 'Position', numeric: true, cell: (u) => u.position },
-    { key: 'serial', label: 'Serial', className: 'whitespace-nowrap', cell: (u) => u.serial },
+    { key: 'position', label: lists.position, numeric: true, cell: (u) => u.position },
+    { key: 'serial', label: lists.serial, className: 'whitespace-nowrap', cell: (u) => u.serial },
     {
       key: 'place',
-      label: 'Place on the roof',
+      label: lists.placeOnTheRoof,
       className: 'w-full text-ink-2',
-      cell: (u) => u.roofPlace || 'not recorded',
+      cell: (u) => u.roofPlace || lists.notRecorded,
     },
   ];
   if (onReplace)
     columns.push({
       key: 'replace',
-      label: 'Another unit',
+      label: lists.anotherUnit,
       from: 'sm', // on a phone "Replace a unit" below does it
       cell: (u) => (
         <Button
           className="!px-2.5 !text-sm"
-          aria-label={`Replace ${u.serial} at ${u.stringName}-${u.position}`}
+          aria-label={lists.replaceAt(u.serial, u.stringName, u.position)}
           onClick={() => onReplace({ stringId: u.stringId, position: u.position })}
         >
-          Replace
+          {lists.replace}
         </Button>
       ),
     });
   return (
     <Sheet
       id="missing"
-      title="Still to hear"
+      title={lists.stillToHear}
       flush
       aside={
         <span className="flex flex-wrap items-center gap-x-4 gap-y-1">
-          {counted(tally.missing.length, 'unit')}
-          {tally.missing.length > 0 && <ButtonLink href={paths.walk(siteId)}>Walk to them</ButtonLink>}
+          {lists.countedMissingUnit(tally.missing.length)}
+          {tally.missing.length > 0 && <ButtonLink href={paths.walk(siteId)}>{lists.walkToThem}</ButtonLink>}
         </span>
       }
     >
       <Table
-        caption="Units that have not answered"
+        caption={lists.unitsThatHaveNot}
         columns={columns}
         rows={shown}
         rowKey={(u) => u.serial}
-        empty={<Notice kind="done" title="Every unit on the roll has answered" />}
+        empty={<Notice kind="done" title={lists.everyUnitOnThe} />}
       />
       {shown.length < tally.missing.length && (
         <Button className="mt-3" onClick={() => setAll(true)}>
-          Show all {tally.missing.length}
+          {lists.showAll(tally.missing.length)}
         </Button>
       )}
     </Sheet>
@@ -104,7 +105,7 @@ export function UnknownSheet({
 }) {
   if (tally.unknown.length === 0) return null;
   return (
-    <Sheet id="unknown" title="Heard, but not on the as-built">
+    <Sheet id="unknown" title={lists.heardButNotOn}>
       <ul>
         {tally.unknown.map((u) => {
           const [best] = suggestedFor(u.answer, page.strings, page.answers);
@@ -118,7 +119,8 @@ export function UnknownSheet({
                 <p className="font-semibold">{u.answer.serial}</p>
                 <p className="text-sm text-ink-2">
                   {nearWords(u)}
-                  {u.answer.signal !== null && `, ${decibelMilliwatts(u.answer.signal)}`}, first at{' '}
+                  {u.answer.signal !== null && `, ${decibelMilliwatts(u.answer.signal)}`}
+                  {lists.firstAt}
                   <time dateTime={u.answer.at} title={fullTime(u.answer.at, page.site.timeZone)}>
                     {clockOrDate(u.answer.at, page.at, page.site.timeZone)}
                   </time>
@@ -130,18 +132,15 @@ export function UnknownSheet({
                 )}
               </div>
               {onPlace && (
-                <Button aria-label={`Place ${u.answer.serial}`} onClick={() => onPlace(u)}>
-                  Place
+                <Button aria-label={lists.placeSerial(u.answer.serial)} onClick={() => onPlace(u)}>
+                  {lists.place}
                 </Button>
               )}
             </li>
           );
         })}
       </ul>
-      <p className="mt-3 text-sm text-ink-2">
-        A spare, a neighbour’s unit, or one that sits where the drawing has another: read the label on the
-        roof.
-      </p>
+      <p className="mt-3 text-sm text-ink-2">{lists.aSpareANeighbours}</p>
     </Sheet>
   );
 }
@@ -152,34 +151,39 @@ export function GatewaysSheet({ page, tally }: { page: RollCallPage; tally: Roll
   const columns: Column<GatewayTally>[] = [
     {
       key: 'name',
-      label: 'Gateway',
+      label: lists.gateway,
       cell: (g) => (
         <>
           <span className="font-medium">{g.name}</span>
           <span className="block text-sm text-ink-2">
             {g.lastHeardAt
-              ? `${g.silent ? 'silent, last' : 'last'} ${clockOrDate(g.lastHeardAt, page.at, page.site.timeZone)}`
-              : 'nothing heard yet'}
+              ? lists.silentLastHeardAt(g.silent, g.lastHeardAt, page.at, page.site.timeZone)
+              : lists.nothingHeardYet}
           </span>
         </>
       ),
     },
-    { key: 'heard', label: 'Heard', numeric: true, cell: (g) => g.heard },
+    { key: 'heard', label: lists.heard, numeric: true, cell: (g) => g.heard },
     {
       key: 'weakest',
-      label: 'Weakest',
+      label: lists.weakest,
       numeric: true,
       cell: (g) => (g.weakest ? decibelMilliwatts(g.weakest.signal) : 'none'),
     },
   ];
   const w = tally.weakest;
   return (
-    <Sheet id="gateways" title="Gateways">
-      <Table caption="Roll call by gateway" columns={columns} rows={tally.gateways} rowKey={(g) => g.name} />
+    <Sheet id="gateways" title={lists.gateways}>
+      <Table
+        caption={lists.rollCallByGateway}
+        columns={columns}
+        rows={tally.gateways}
+        rowKey={(g) => g.name}
+      />
       {w && (
         <p className="mt-3 text-sm text-ink-2">
-          Weakest of all: {w.stringName}, position {w.position} ({w.serial}) at {decibelMilliwatts(w.signal)}
-          {w.answer && `, by ${w.answer.gateway}`}.
+          {lists.weakestOfAllPosition(w.stringName, w.position, w.serial, w.signal)}
+          {w.answer && lists.byGateway(w.answer.gateway)}.
         </p>
       )}
     </Sheet>

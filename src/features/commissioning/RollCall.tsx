@@ -29,6 +29,7 @@ import { patchRollCall, runChanged } from './live';
 import { outlookOf } from './outlook';
 import { liveSteps, tallyOf } from './tally';
 import { rollCallWords } from './words';
+import { commissioningRollCall } from '../../words/commissioning';
 
 interface Props {
   initial: RollCallPage;
@@ -44,10 +45,10 @@ type Open =
   | { kind: 'replace'; slot: SlotRef | null }
   | { kind: 'swap'; first: SlotRef | null; second: SlotRef | null };
 const DONE: Record<PlaceBody['kind'], string> = {
-  place: 'The unit is placed',
-  replace: 'The unit is replaced; the old one’s life stays in the history',
-  swap: 'The two units are exchanged on the as-built',
-  move: 'The unit is moved on the as-built',
+  place: commissioningRollCall.theUnitIsPlaced,
+  replace: commissioningRollCall.theUnitIsReplaced,
+  swap: commissioningRollCall.theTwoUnitsAre,
+  move: commissioningRollCall.theUnitIsMoved,
 };
 
 /** The roll call of a site, live. */
@@ -102,7 +103,7 @@ export function RollCall({ initial, mayRun, mayPlace, view, typed }: Props) {
     <>
       <Heading
         crumbs={[
-          { label: 'Commissioning', href: paths.commissioning() },
+          { label: commissioningRollCall.commissioning, href: paths.commissioning() },
           { label: page.site.name, href: paths.site(siteId) },
         ]}
         finding={words.heading}
@@ -115,12 +116,12 @@ export function RollCall({ initial, mayRun, mayPlace, view, typed }: Props) {
       <div className="-mt-3 mb-3 min-h-[22px]">
         <LiveMark lostSince={lost?.since ? lost.since.toISOString() : null} timeZone={page.site.timeZone} />
       </div>
-      <NotRead error={error} title="The roll call could not be read again" className="mb-4" />
+      <NotRead error={error} title={commissioningRollCall.theRollCallCould} className="mb-4" />
       <div className="grid gap-5 lg:grid-cols-[minmax(0,1fr)_340px] lg:grid-rows-[auto_auto_1fr] xl:grid-cols-[200px_minmax(0,1fr)_340px] xl:grid-rows-[auto_1fr]">
         <div className="grid content-start gap-5 lg:col-start-2 lg:row-start-2 xl:col-start-3 xl:row-start-1">
           {waits && (
-            <Caution strong="Until they have answered, units of this type pass full module voltage">
-              and do not obey the initiator. Treat every string as live.
+            <Caution strong={commissioningRollCall.untilTheyHaveAnswered}>
+              {commissioningRollCall.andDoNotObey}
             </Caution>
           )}
           <RunPanel page={page} mayRun={mayRun} roster={tally.roster} onChanged={again} typed={typed} />
@@ -138,9 +139,9 @@ export function RollCall({ initial, mayRun, mayPlace, view, typed }: Props) {
         <div className="grid content-start gap-5 lg:col-start-2 lg:row-start-3 xl:col-start-3 xl:row-start-2">
           {done && (
             <Notice kind="done" title={done}>
-              The loggers get the new roster.{' '}
+              {commissioningRollCall.theLoggersGetThe}
               <a href={paths.asBuiltHistory(siteId)} className="text-petrol hover:underline">
-                See the history
+                {commissioningRollCall.seeTheHistory}
               </a>
             </Notice>
           )}

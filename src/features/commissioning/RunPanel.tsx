@@ -10,6 +10,7 @@ import { queryClient } from '../../lib/query-client';
 import { paths } from '../../schemas/paths';
 import type { RollCallPage, RollCallRun, RollCallStart } from '../../schemas/api/roll-call';
 import { commandInForceWords } from './words';
+import { runPanel } from '../../words/commissioning';
 
 interface Props {
   page: RollCallPage;
@@ -28,7 +29,7 @@ export interface StartTyped {
 
 function Faults({ error }: { error: Error | null }) {
   if (!error) return null;
-  const title = error instanceof ApiError ? error.title : 'It did not work';
+  const title = error instanceof ApiError ? error.title : runPanel.itDidNotWork;
   return (
     <div className="mb-4">
       <Notice kind="failed" title={title}>
@@ -56,8 +57,8 @@ function Start({ page, onChanged, typed }: Pick<Props, 'page' | 'onChanged' | 't
   const submit = (event: SubmitEvent) => {
     event.preventDefault();
     const faults = {
-      name: personOnSite.trim().length < 2 ? 'Enter the name of the person who is on site.' : undefined,
-      onSite: onSite ? undefined : 'Confirm that this person is on site now.',
+      name: personOnSite.trim().length < 2 ? runPanel.enterTheNameOf : undefined,
+      onSite: onSite ? undefined : runPanel.confirmThatThisPerson,
     };
     setMissing(faults);
     if (!faults.name && !faults.onSite) start.mutate({ personOnSite: personOnSite.trim(), onSite: true });
@@ -70,27 +71,24 @@ function Start({ page, onChanged, typed }: Pick<Props, 'page' | 'onChanged' | 't
       <Faults error={start.error} />
       {typed && !start.error && start.isIdle && (
         <div className="mb-4">
-          <Notice kind="failed" title="The roll call was not started">
+          <Notice kind="failed" title={runPanel.theRollCallWas}>
             {typed.fault}
           </Notice>
         </div>
       )}
       <p className="mb-2">
-        <strong className="font-semibold">A unit that is heard begins to follow the command in force.</strong>{' '}
-        {commandInForceWords(page.commands)}
+        <strong className="font-semibold">{runPanel.aUnitThatIs}</strong> {commandInForceWords(page.commands)}
       </p>
-      <p className="mb-4 text-ink-2">
-        Wakeline asks the loggers to listen; it sends no release and no shutdown.
-      </p>
+      <p className="mb-4 text-ink-2">{runPanel.wakelineAsksTheLoggers}</p>
       <Field
-        label="Who is on site"
+        label={runPanel.whoIsOnSite}
         name="personOnSite"
         autoComplete="name"
         maxLength={120}
         value={personOnSite}
         onChange={(e) => setPersonOnSite(e.target.value)}
         error={nameFault}
-        hint="First and last name; it is kept with the roll call."
+        hint={runPanel.firstAndLastName}
       />
       <label className="mt-3 flex min-h-[44px] items-center gap-3">
         <input
@@ -103,7 +101,7 @@ function Start({ page, onChanged, typed }: Pick<Props, 'page' | 'onChanged' | 't
           aria-invalid={missing.onSite ? true : undefined}
           className="h-5 w-5 flex-none accent-petrol"
         />
-        <span>This person is on site now, and nobody is working on the strings.</span>
+        <span>{runPanel.thisPersonIsOn}</span>
       </label>
       {missing.onSite && (
         <p id="on-site-fault" role="alert" className="mb-2 text-sm font-medium text-rust-ink">
@@ -111,7 +109,7 @@ function Start({ page, onChanged, typed }: Pick<Props, 'page' | 'onChanged' | 't
         </p>
       )}
       <Button type="submit" weight="primary" className="mt-3 w-full" disabled={start.isPending}>
-        {start.isPending ? 'Starting …' : 'Start the roll call'}
+        {start.isPending ? runPanel.starting : runPanel.startTheRollCall}
       </Button>
     </form>
   );
@@ -129,8 +127,9 @@ function Running({ page, run, mayRun, onChanged }: Omit<Props, 'roster' | 'typed
     <>
       <Faults error={stop.error} />
       <p>
-        Started <SiteTime at={run.startedAt} now={page.at} timeZone={page.site.timeZone} zone /> by{' '}
-        {run.startedBy}. On site: {run.personOnSite}.
+        {runPanel.started}
+        <SiteTime at={run.startedAt} now={page.at} timeZone={page.site.timeZone} zone />
+        {runPanel.byOnSite(run.startedBy, run.personOnSite)}
       </p>
       <p className="mt-2 text-ink-2">{commandInForceWords(page.commands)}</p>
       {mayRun ? (
@@ -143,11 +142,11 @@ function Running({ page, run, mayRun, onChanged }: Omit<Props, 'roster' | 'typed
         >
           <input type="hidden" name="action" value="stop" />
           <Button type="submit" className="mt-4 w-full" disabled={stop.isPending}>
-            {stop.isPending ? 'Stopping …' : 'Stop the roll call'}
+            {stop.isPending ? runPanel.stopping : runPanel.stopTheRollCall}
           </Button>
         </form>
       ) : (
-        <p className="mt-2 text-ink-2">A manager or a technician stops it.</p>
+        <p className="mt-2 text-ink-2">{runPanel.aManagerOrA}</p>
       )}
     </>
   );
@@ -162,29 +161,29 @@ export function RunPanel({ page, mayRun, roster, onChanged, typed }: Props) {
   return (
     <Sheet
       id="run"
-      title={open ? 'The roll call is running' : run ? 'Start the roll call again' : 'Start the roll call'}
+      title={open ? runPanel.theRollCallIs : run ? runPanel.startTheRollCallAgain : runPanel.startTheRollCall}
     >
       {open ? (
         <Running page={page} run={open} mayRun={mayRun} onChanged={onChanged} />
       ) : mayRun ? (
         <Start page={page} onChanged={onChanged} typed={typed} />
       ) : (
-        <p>A manager or a technician starts it, with somebody on site.</p>
+        <p>{runPanel.aManagerOrATechnician}</p>
       )}
       {away.length > 0 && (
         <p className="mt-4 border border-dashed border-rule p-3 text-ink-2">
           {away.map((l) => (
             <span key={l.serial} className="block">
-              Logger {l.serial}{' '}
+              {runPanel.loggerSerial(l.serial)}
               {l.lastSpokeAt ? (
                 <>
-                  has not spoken since{' '}
+                  {runPanel.hasNotSpokenSince}
                   <SiteTime at={l.lastSpokeAt} now={page.at} timeZone={page.site.timeZone} />
                 </>
               ) : (
-                'has not spoken yet'
+                runPanel.hasNotSpokenYet
               )}
-              : it listens when it comes back.
+              {runPanel.itListensWhenIt}
             </span>
           ))}
         </p>

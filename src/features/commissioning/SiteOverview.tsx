@@ -14,7 +14,6 @@ import { NotRead } from '../../components/ui/NotRead';
 import { Sheet } from '../../components/ui/Sheet';
 import { SiteTime } from '../../components/ui/Time';
 import { openGaps } from '../../domain/commissioning/steps';
-import { counted } from '../../drawings/numbers';
 import { api } from '../../lib/api';
 import { useLive } from '../../lib/live-hook';
 import { queryClient } from '../../lib/query-client';
@@ -22,6 +21,7 @@ import { paths } from '../../schemas/paths';
 import type { SiteSteps, StepNow } from '../../schemas/api/commissioning';
 import { Gaps } from './Gaps';
 import { siteHeading } from './under-way';
+import { siteOverview } from '../../words/commissioning';
 
 interface Props {
   initial: SiteSteps;
@@ -32,12 +32,12 @@ interface Props {
 }
 
 const DO: Record<StepNow['key'], string> = {
-  as_built: 'Open the as-built',
-  install_checks: 'Open the install checks',
-  meter_readings: 'Open the readings',
-  roll_call: 'Open the roll call',
-  shutdown_test: 'Open the shutdown tests',
-  handover: 'Open the handover',
+  as_built: siteOverview.openTheAsBuilt,
+  install_checks: siteOverview.openTheInstallChecks,
+  meter_readings: siteOverview.openTheReadings,
+  roll_call: siteOverview.openTheRollCall,
+  shutdown_test: siteOverview.openTheShutdownTests,
+  handover: siteOverview.openTheHandover,
 };
 const MOST_GAPS = 6;
 
@@ -75,7 +75,7 @@ function StepSheet({
           {step.words}
           {step.startedAt && (
             <>
-              {' · since '}
+              {siteOverview.since}
               <SiteTime at={step.startedAt} now={at} timeZone={site.timeZone} />
             </>
           )}
@@ -88,13 +88,13 @@ function StepSheet({
       {rest > 0 && (
         <details className={shown > 0 ? 'border-t border-rule-faint pt-1' : ''}>
           <summary className="target cursor-pointer text-petrol">
-            {shown > 0 ? counted(rest, 'more point') : `${counted(rest, 'point')} open`}
+            {shown > 0 ? siteOverview.countedRestMorePoint(rest) : siteOverview.restOpen(rest)}
           </summary>
           <Gaps site={site.id} gaps={step.gaps.slice(shown)} mayAccept={mayAccept} onAccepted={onAccepted} />
         </details>
       )}
       {step.gaps.length === 0 && step.key !== 'handover' && step.state === 'done' && (
-        <p className="text-ink-2">Nothing is open.</p>
+        <p className="text-ink-2">{siteOverview.nothingIsOpen}</p>
       )}
       <ButtonLink
         href={STEP_PAGES[step.key](site.id)}
@@ -126,12 +126,12 @@ export function SiteOverview({ initial, at, mayAccept, children }: Props) {
   });
   const finding = siteHeading(site);
   const links: [string, string][] = [
-    ['Design checks', paths.designChecks(site.id)],
-    ['Roof plan', paths.roofPlan(site.id)],
-    ['Walk and ladder card', paths.walk(site.id)],
-    ['Which string a unit is in, by current', paths.membership(site.id)],
-    ['Who changed what', paths.asBuiltHistory(site.id)],
-    ['The site as it stands', paths.site(site.id)],
+    [siteOverview.designChecks, paths.designChecks(site.id)],
+    [siteOverview.roofPlan, paths.roofPlan(site.id)],
+    [siteOverview.walkAndLadderCard, paths.walk(site.id)],
+    [siteOverview.whichStringAUnit, paths.membership(site.id)],
+    [siteOverview.whoChangedWhat, paths.asBuiltHistory(site.id)],
+    [siteOverview.theSiteAsIt, paths.site(site.id)],
   ];
   return (
     <>
@@ -139,9 +139,9 @@ export function SiteOverview({ initial, at, mayAccept, children }: Props) {
         finding={{ heading: finding.finding, sentence: finding.sentence }}
         status={status}
         timeZone={site.timeZone}
-        crumbs={[{ label: 'Commissioning', href: paths.commissioning() }, { label: site.name }]}
+        crumbs={[{ label: siteOverview.commissioning, href: paths.commissioning() }, { label: site.name }]}
       />
-      <NotRead error={error} title="The steps could not be read again" className="mb-4" />
+      <NotRead error={error} title={siteOverview.theStepsCouldNot} className="mb-4" />
       <div className="grid gap-5 lg:grid-cols-[minmax(0,1fr)_340px]">
         <div className="grid min-w-0 content-start gap-5">
           {site.steps.map((step) => (
@@ -157,17 +157,16 @@ export function SiteOverview({ initial, at, mayAccept, children }: Props) {
         </div>
         <div className="grid content-start gap-5">
           {openGaps(site.steps).length > 0 && (
-            <Caution strong="Treat every string as live">
-              {site.steps.every(
-                (s) => (s.key !== 'roll_call' && s.key !== 'shutdown_test') || s.state === 'done',
-              )
-                ? 'until you have isolated it and proved it dead with a rated meter. '
-                : 'until its roll call is complete and its shutdown has been measured. '}
-              Local code and the authority having jurisdiction come first.
+            <Caution strong={siteOverview.treatEveryStringAs}>
+              {siteOverview.localCodeAndThe(
+                site.steps.every(
+                  (s) => (s.key !== 'roll_call' && s.key !== 'shutdown_test') || s.state === 'done',
+                ),
+              )}
             </Caution>
           )}
           {children}
-          <Sheet id="more" title="Also for this site">
+          <Sheet id="more" title={siteOverview.alsoForThisSite}>
             <ul>
               {links.map(([words, href]) => (
                 <li key={href}>

@@ -7,12 +7,12 @@ import { SearchInput } from '../../components/ui/SearchInput';
 import { Sheet } from '../../components/ui/Sheet';
 import { RelativeTime } from '../../components/ui/Time';
 import { currentStep, openGaps, STEPS } from '../../domain/commissioning/steps';
-import { counted } from '../../drawings/numbers';
 import { withQuery } from '../../lib/api';
 import { useViewInUrl } from '../../lib/view-in-url';
 import { paths } from '../../schemas/paths';
 import type { SiteSteps, UnderWayView } from '../../schemas/api/commissioning';
 import { daysInStep, listedSites, UNDER_WAY_DEFAULTS } from './under-way';
+import { sitesUnderWay } from '../../words/commissioning';
 
 interface Props {
   sites: readonly SiteSteps[];
@@ -40,11 +40,10 @@ function Blocks({ site }: { site: SiteSteps }) {
     const [first, ...more] = openGaps([step]);
     return first ? [{ step, first, more: more.length }] : [];
   });
-  if (blocking.length === 0)
-    return <p className="text-ink-2">Nothing blocks the handover. It waits to be made.</p>;
+  if (blocking.length === 0) return <p className="text-ink-2">{sitesUnderWay.nothingBlocksTheHandover}</p>;
   return (
     <>
-      <h3 className="text-sm text-ink-2">Blocks the handover</h3>
+      <h3 className="text-sm text-ink-2">{sitesUnderWay.blocksTheHandover}</h3>
       <ul className="mt-1">
         {blocking.map(({ step, first, more }) => (
           <li key={step.key}>
@@ -56,7 +55,7 @@ function Blocks({ site }: { site: SiteSteps }) {
                   href={`${paths.commissioningSite(site.id)}#step-${step.key}`}
                   className="text-petrol underline underline-offset-[3px]"
                 >
-                  And {counted(more, 'more point')} of {STEP_NAMES[step.key].toLowerCase()}
+                  {sitesUnderWay.andOf(more, STEP_NAMES[step.key])}
                 </a>
               </>
             )}
@@ -82,7 +81,7 @@ function Site({ site, at }: { site: SiteSteps; at: string }) {
         <>
           {site.place}
           {site.place && ' · '}
-          {counted(site.strings, 'string')}, {counted(site.units, 'unit')}
+          {sitesUnderWay.countedStringsString(site.strings)}, {sitesUnderWay.countedUnitsUnit(site.units)}
         </>
       }
     >
@@ -94,15 +93,19 @@ function Site({ site, at }: { site: SiteSteps; at: string }) {
         <dl className="grid content-start gap-y-1 text-sm text-ink-2 lg:text-right">
           {current && (
             <div>
-              <dt className="sr-only">Step</dt>
+              <dt className="sr-only">{sitesUnderWay.step}</dt>
               <dd>
                 {STEP_NAMES[current.key]}
-                {days === null ? ', not begun' : days === 0 ? ', since today' : `, ${counted(days, 'day')}`}
+                {days === null
+                  ? sitesUnderWay.notBegun
+                  : days === 0
+                    ? sitesUnderWay.sinceToday
+                    : `, ${sitesUnderWay.countedDaysDay(days)}`}
               </dd>
             </div>
           )}
           <div>
-            <dt className="sr-only">On it</dt>
+            <dt className="sr-only">{sitesUnderWay.onIt}</dt>
             <dd>
               {site.lastHand ? (
                 <>
@@ -110,19 +113,19 @@ function Site({ site, at }: { site: SiteSteps; at: string }) {
                   <RelativeTime at={site.lastHand.at} now={at} timeZone={site.timeZone} />
                 </>
               ) : (
-                'nobody yet'
+                sitesUnderWay.nobodyYet
               )}
             </dd>
           </div>
           {site.rollCallRunning && (
             <div>
-              <dt className="sr-only">Roll call</dt>
+              <dt className="sr-only">{sitesUnderWay.rollCall}</dt>
               <dd>
                 <a
                   href={paths.rollCall(site.id)}
                   className="font-medium text-petrol underline underline-offset-[3px]"
                 >
-                  The roll call is running
+                  {sitesUnderWay.theRollCallIs}
                 </a>
               </dd>
             </div>
@@ -146,31 +149,31 @@ export function SitesUnderWay({ sites, at, view: initial, mayCreate }: Props) {
       >
         <SearchInput
           name="q"
-          label="Filter by name, place or person"
+          label={sitesUnderWay.filterByNamePlace}
           value={view.q}
           onChange={(typed) => change({ q: typed }, 'typed')}
           className="sm:w-[260px]"
         />
         <Choice
           inline
-          label="At step"
+          label={sitesUnderWay.atStep}
           name="step"
           value={view.step}
           options={[
-            { value: 'all', label: 'any' },
+            { value: 'all', label: sitesUnderWay.any },
             ...STEPS.map((step) => ({ value: step, label: STEP_NAMES[step] })),
           ]}
           onChange={(step) => change({ step: step as UnderWayView['step'] })}
         />
         <Choice
           inline
-          label="Sorted by"
+          label={sitesUnderWay.sortedBy}
           name="sort"
           value={view.sort}
           options={[
-            { value: 'name', label: 'name' },
-            { value: 'days', label: 'days in step' },
-            { value: 'blocks', label: 'points that block' },
+            { value: 'name', label: sitesUnderWay.name },
+            { value: 'days', label: sitesUnderWay.daysInStep },
+            { value: 'blocks', label: sitesUnderWay.pointsThatBlock },
           ]}
           onChange={(sort) => change({ sort: sort as UnderWayView['sort'] })}
         />
@@ -178,15 +181,15 @@ export function SitesUnderWay({ sites, at, view: initial, mayCreate }: Props) {
           <ButtonLink href={withQuery(paths.api.commissioningCsv(), view)}>CSV</ButtonLink>
           {mayCreate && (
             <ButtonLink href={paths.newSite()} weight="primary">
-              Begin a site
+              {sitesUnderWay.beginASite}
             </ButtonLink>
           )}
         </span>
       </form>
-      {sites.length === 0 && <Notice kind="empty" title="Nothing is under way" />}
+      {sites.length === 0 && <Notice kind="empty" title={sitesUnderWay.nothingIsUnderWay} />}
       {sites.length > 0 && shown.length === 0 && (
-        <Notice kind="empty" title="No site fits these filters">
-          Clear the search, or choose any step.
+        <Notice kind="empty" title={sitesUnderWay.noSiteFitsThese}>
+          {sitesUnderWay.clearTheSearchOr}
         </Notice>
       )}
       <div className="grid gap-5">

@@ -10,6 +10,7 @@ import { paths } from '../../schemas/paths';
 import type { RollCallView } from '../../schemas/api/roll-call';
 import type { RollTally, StringTally } from './tally';
 import { LIST_DEFAULTS, heardSlots, listedStrings, sortingOf } from './list';
+import { stringsSheet } from '../../words/commissioning';
 
 interface Props {
   siteId: string;
@@ -23,7 +24,7 @@ export function StringsSheet({ siteId, tally, view: initial }: Props) {
   const columns: Column<StringTally>[] = [
     {
       key: 'name',
-      label: 'String',
+      label: stringsSheet.string,
       sortable: true,
       cell: (s) => (
         <a
@@ -36,19 +37,19 @@ export function StringsSheet({ siteId, tally, view: initial }: Props) {
     },
     {
       key: 'units',
-      label: 'Units, from the negative end',
+      label: stringsSheet.unitsFromTheNegative,
       cell: (s) => <Comb id={`comb-${s.string.id}`} slots={heardSlots(s)} width={252} />,
     },
     {
       key: 'heard',
-      label: 'Heard',
+      label: stringsSheet.heard,
       numeric: true,
       sortable: true,
       cell: (s) => `${s.heard} / ${s.units.length}`,
     },
     {
       key: 'signal',
-      label: 'Weakest signal',
+      label: stringsSheet.weakestSignal,
       numeric: true,
       sortable: true,
       from: 'sm',
@@ -59,47 +60,44 @@ export function StringsSheet({ siteId, tally, view: initial }: Props) {
   return (
     <Sheet
       id="strings"
-      title="Strings"
+      title={stringsSheet.strings}
       flush
       aside={
         <div className="flex flex-wrap items-center gap-x-4 gap-y-1">
           <Segmented
-            label="Which strings"
+            label={stringsSheet.whichStrings}
             options={[
-              { value: 'all', label: `All ${tally.strings.length}` },
+              { value: 'all', label: stringsSheet.allStrings(tally.strings.length) },
               {
                 value: 'missing',
-                label: `Still missing units, ${tally.strings.filter((s) => s.heard < s.units.length).length}`,
+                label: stringsSheet.stillMissingUnits(
+                  tally.strings.filter((s) => s.heard < s.units.length).length,
+                ),
               },
             ]}
             value={view.strings}
             onChange={(strings) => change({ strings })}
           />
           <ButtonLink href={paths.api.rollCallCsv(siteId)} download>
-            Units as CSV
+            {stringsSheet.unitsAsCSV}
           </ButtonLink>
         </div>
       }
     >
       <Table
-        caption="Roll call by string"
+        caption={stringsSheet.rollCallByString}
         columns={columns}
         rows={rows}
         rowKey={(s) => s.string.id}
         sorting={sortingOf(view)}
         onSort={(s) => change({ sort: s.key as RollCallView['sort'], order: s.descending ? 'down' : 'up' })}
-        empty={<Notice kind="empty" title="No string is missing a unit" />}
+        empty={<Notice kind="empty" title={stringsSheet.noStringIsMissing} />}
       />
       {tally.mute > 0 && (
-        <p className="mt-3 text-sm text-ink-2">
-          {tally.mute} units of shutdown-only strings are not on the roll: according to the type entered they
-          cannot answer.
-        </p>
+        <p className="mt-3 text-sm text-ink-2">{stringsSheet.unitsOfShutdownOnly(tally.mute)}</p>
       )}
       {tally.emptySlots > 0 && (
-        <p className="mt-3 text-sm text-ink-2">
-          {tally.emptySlots} {tally.emptySlots === 1 ? 'slot has' : 'slots have'} no serial on the as-built.
-        </p>
+        <p className="mt-3 text-sm text-ink-2">{stringsSheet.noSerialOnThe(tally.emptySlots)}</p>
       )}
     </Sheet>
   );

@@ -7,6 +7,7 @@ import { api } from '../../lib/api';
 import { queryClient } from '../../lib/query-client';
 import type { MembershipPage } from '../../schemas/api/membership';
 import { paths } from '../../schemas/paths';
+import { wiredSheet } from '../../words/commissioning';
 
 interface Props {
   siteId: string;
@@ -32,7 +33,7 @@ export function WiredSheet({ siteId, onReview, onReplace }: Props) {
   const groups = groupsOf((data?.suspects ?? []).filter((s) => s.outcome !== 'fits_none'));
   const counts = data?.counts;
   return (
-    <Sheet id="wired" title="Wired differently from the drawing?">
+    <Sheet id="wired" title={wiredSheet.wiredDifferentlyFromThe}>
       {groups.length > 0 ? (
         <ul className="grid gap-4">
           {groups.slice(0, SHOWN).map((group) => {
@@ -41,7 +42,7 @@ export function WiredSheet({ siteId, onReview, onReplace }: Props) {
               <li key={a.serial}>
                 <p>{suspectWords(group)}</p>
                 <div className="mt-2.5 flex flex-wrap gap-2">
-                  <ButtonLink href={paths.membership(siteId)}>See the currents</ButtonLink>
+                  <ButtonLink href={paths.membership(siteId)}>{wiredSheet.seeTheCurrents}</ButtonLink>
                   {onReview && (
                     <Button
                       onClick={() =>
@@ -55,7 +56,7 @@ export function WiredSheet({ siteId, onReview, onReplace }: Props) {
                         )
                       }
                     >
-                      Review the move
+                      {wiredSheet.reviewTheMove}
                     </Button>
                   )}
                 </div>
@@ -67,24 +68,24 @@ export function WiredSheet({ siteId, onReview, onReplace }: Props) {
         <>
           <p className="text-ink-2">
             {error
-              ? `The currents could not be read: ${error.message}`
+              ? wiredSheet.theCurrentsCouldNot(error.message)
               : !counts
-                ? 'Comparing the units’ currents …'
+                ? wiredSheet.comparingTheUnitsCurrents
                 : counts.here > 0
-                  ? `${counts.here} units carry the current of their string; for ${counts.cantTell} it can’t be told.`
-                  : 'It can’t be told yet: the strings’ currents are too small or too alike.'}
+                  ? wiredSheet.unitsCarryTheCurrent(counts.here, counts.cantTell)
+                  : wiredSheet.itCantBeTold}
           </p>
           <div className="mt-2.5">
-            <ButtonLink href={paths.membership(siteId)}>Compare currents, or isolate a string</ButtonLink>
+            <ButtonLink href={paths.membership(siteId)}>{wiredSheet.compareCurrentsOrIsolate}</ButtonLink>
           </div>
         </>
       )}
       {onReview && onReplace && (
         <div className="mt-4 border-t border-rule-faint pt-3">
-          <p className="mb-2 text-sm text-ink-2">Read on the roof that it is otherwise?</p>
+          <p className="mb-2 text-sm text-ink-2">{wiredSheet.readOnTheRoof}</p>
           <div className="flex flex-wrap gap-2">
-            <Button onClick={() => onReview(null, null)}>Exchange two serials</Button>
-            <Button onClick={onReplace}>Replace a unit</Button>
+            <Button onClick={() => onReview(null, null)}>{wiredSheet.exchangeTwoSerials}</Button>
+            <Button onClick={onReplace}>{wiredSheet.replaceAUnit}</Button>
           </div>
         </div>
       )}

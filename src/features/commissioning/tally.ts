@@ -1,6 +1,7 @@
 import type { HeardItem } from '../../schemas/live';
 import type { SlotNow, StringNow } from '../../schemas/api/now';
 import type { RollCallPage } from '../../schemas/api/roll-call';
+import { commissioningTally } from '../../words/commissioning';
 
 /** What the roll call amounts to, counted from the as-built and the answers. */
 
@@ -161,6 +162,6 @@ export function curveOf(
 export const liveSteps = (steps: RollCallPage['steps'], tally: RollTally): RollCallPage['steps'] =>
   steps.map((step) =>
     step.key === 'roll_call' && tally.heard > 0
-      ? { ...step, words: `${tally.heard} of ${tally.roster} heard` }
+      ? { ...step, words: commissioningTally.ofHeard(tally.heard, tally.roster) }
       : step,
   );

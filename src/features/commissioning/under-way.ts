@@ -1,6 +1,7 @@
 import { currentStep, openGaps } from '../../domain/commissioning/steps';
-import { countAtStart, counted, number } from '../../drawings/numbers';
+import { number } from '../../drawings/numbers';
 import type { SiteSteps, UnderWayView } from '../../schemas/api/commissioning';
+import { underWay } from '../../words/commissioning';
 
 export const UNDER_WAY_DEFAULTS: UnderWayView = { q: '', step: 'all', sort: 'name' };
 
@@ -33,19 +34,17 @@ export function listedSites(sites: readonly SiteSteps[], view: UnderWayView, at:
 /** The heading of the list of sites under way. */
 export function underWayHeading(sites: readonly SiteSteps[]): string {
   const running = sites.filter((s) => s.rollCallRunning);
-  if (sites.length === 0) return 'No site is being commissioned';
+  if (sites.length === 0) return underWay.noSiteIsBeing;
   const [only] = running;
   if (only && running.length === 1) {
     const roll = only.steps.find((s) => s.key === 'roll_call');
-    return `The roll call is running at ${only.name}${roll ? `: ${roll.words}` : ''}`;
+    return underWay.theRollCallIs(only.name, roll ? `: ${roll.words}` : '');
   }
-  if (running.length > 1) return `Roll calls are running at ${counted(running.length, 'site')}`;
-  return sites.length === 1
-    ? 'One site is being commissioned'
-    : `${number(sites.length)} sites are being commissioned`;
+  if (running.length > 1) return underWay.rollCallsAreRunning(running.length);
+  return sites.length === 1 ? underWay.oneSiteIsBeing : underWay.sitesAreBeingCommissioned(sites.length);
 }
 
-const LIVE_UNTIL_MEASURED = 'Reports prove nothing dead: isolate and measure before touching a conductor.';
+const LIVE_UNTIL_MEASURED = underWay.reportsProveNothingDead;
 /** Whether every unit that can answer has. */
 export const rollCalled = (site: SiteSteps): boolean =>
   site.steps.every((s) => s.key !== 'roll_call' || s.state === 'done');
@@ -56,16 +55,16 @@ export function siteHeading(site: SiteSteps): { finding: string; sentence: strin
   const done = site.steps.filter((s) => s.state === 'done').length;
   if (site.steps.every((s) => s.state === 'done'))
     return {
-      finding: `${site.name} is handed over`,
-      sentence: 'Its papers stay here; a later change makes a new version.',
+      finding: underWay.isHandedOver(site.name),
+      sentence: underWay.itsPapersStayHere,
     };
   if (gaps.length === 0)
     return {
-      finding: `${site.name} is ready to be handed over`,
-      sentence: 'Every step before it is done, or its gaps are accepted by name.',
+      finding: underWay.isReadyToBe(site.name),
+      sentence: underWay.everyStepBeforeIt,
     };
   return {
-    finding: `${countAtStart(done)} of ${counted(site.steps.length, 'step')} ${done === 1 ? 'is' : 'are'} done`,
-    sentence: `${counted(gaps.length, 'point blocks', 'points block')} the handover. ${rollCalled(site) ? LIVE_UNTIL_MEASURED : 'Until the roll call is complete, treat every string as live.'}`,
+    finding: underWay.ofDone(done, site.steps.length),
+    sentence: underWay.theHandover(gaps.length, rollCalled(site), LIVE_UNTIL_MEASURED),
   };
 }

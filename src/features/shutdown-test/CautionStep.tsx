@@ -4,6 +4,7 @@ import { Caution } from '../../components/ui/Caution';
 import { Field } from '../../components/ui/Field';
 import { Sheet } from '../../components/ui/Sheet';
 import type { TestFacts, TestRecord } from '../../domain/commissioning/shutdown-test-record';
+import { cautionStep } from '../../words/shutdown-test';
 
 interface Props {
   facts: TestFacts;
@@ -17,7 +18,7 @@ export function CautionStep({ facts, record, person, onAccepted }: Props) {
   const [name, setName] = useState(person);
   const [read, setRead] = useState(false);
   const [tried, setTried] = useState(false);
-  const nameFault = tried && name.trim().length < 2 ? 'Enter your name.' : undefined;
+  const nameFault = tried && name.trim().length < 2 ? cautionStep.enterYourName : undefined;
   const submit = (event: SubmitEvent) => {
     event.preventDefault();
     setTried(true);
@@ -25,35 +26,26 @@ export function CautionStep({ facts, record, person, onAccepted }: Props) {
   };
   return (
     <form onSubmit={submit} noValidate className="grid gap-5">
-      <Caution strong="DC strings are dangerous in light: shock, arc, fire.">
-        Treat every conductor as live before, during and after this test.
-      </Caution>
-      <Sheet id="caution" title="Before you go on">
+      <Caution strong={cautionStep.dcStringsAreDangerous}>{cautionStep.treatEveryConductorAs}</Caution>
+      <Sheet id="caution" title={cautionStep.beforeYouGoOn}>
         <ul className="list-disc space-y-2 pl-5">
           <li>
-            <strong className="font-semibold">Shutdown is not isolation.</strong> Each module and its leads to
-            its unit stay at module voltage.
+            <strong className="font-semibold">{cautionStep.shutdownIsNotIsolation}</strong>
+            {cautionStep.eachModuleAndIts}
           </li>
+          <li>{cautionStep.onlyLicensedOrQualified}</li>
+          <li>{cautionStep.neverOpenAConnector}</li>
+          <li>{cautionStep.theInstrumentIsRated}</li>
           <li>
-            Only licensed or qualified people measure, in the protective equipment that local rules ask for.
+            {cautionStep.wakelineWatches}
+            <strong className="font-semibold">{cautionStep.itSwitchesNothing}</strong>
+            {cautionStep.operatorOperatesInitiatorPlace(
+              record.plan?.operator,
+              facts.initiator.name,
+              facts.initiator.place,
+            )}
           </li>
-          <li>
-            Never open a connector under load. Nobody works on the strings or stands on the roof while the
-            test runs.
-          </li>
-          <li>
-            The instrument is rated for the string’s voltage and proved on a known source before and after. A
-            reading of zero proves nothing if the instrument is broken.
-          </li>
-          <li>
-            Wakeline watches. <strong className="font-semibold">It switches nothing</strong>:{' '}
-            {record.plan?.operator ?? 'a person'} operates {facts.initiator.name}
-            {facts.initiator.place ? ` (${facts.initiator.place})` : ''} by hand.
-          </li>
-          <li>
-            Local code and the authority having jurisdiction come first. Isolate, lock out, prove dead before
-            any work.
-          </li>
+          <li>{cautionStep.localCodeAndThe}</li>
         </ul>
         <label className="mt-4 flex min-h-[44px] items-center gap-3">
           <input
@@ -63,15 +55,15 @@ export function CautionStep({ facts, record, person, onAccepted }: Props) {
             aria-invalid={tried && !read ? true : undefined}
             onChange={(e) => setRead(e.target.checked)}
           />
-          I have read this and told everybody here
+          {cautionStep.iHaveReadThis}
         </label>
         {tried && !read && (
           <p role="alert" className="text-sm font-medium text-rust-ink">
-            Read the points, then tick the box.
+            {cautionStep.readThePointsThen}
           </p>
         )}
         <Field
-          label="Your name"
+          label={cautionStep.yourName}
           className="mt-3 max-w-[360px]"
           value={name}
           maxLength={120}
@@ -79,7 +71,7 @@ export function CautionStep({ facts, record, person, onAccepted }: Props) {
           onChange={(e) => setName(e.target.value)}
         />
         <Button type="submit" weight="primary" className="mt-4 w-full sm:w-auto">
-          Accept and go on
+          {cautionStep.acceptAndGoOn}
         </Button>
       </Sheet>
     </form>

@@ -11,7 +11,6 @@ import { ApiError, api } from '../../lib/api';
 import { queryClient } from '../../lib/query-client';
 import { paths } from '../../schemas/paths';
 import type { ShutdownTestPage } from '../../schemas/api/shutdown-test';
-import { clock } from '../../drawings/times';
 import { CautionStep } from './CautionStep';
 import { PlanStep } from './PlanStep';
 import { RoundStep } from './RoundStep';
@@ -19,6 +18,7 @@ import { SignStep } from './SignStep';
 import { roundName } from './round';
 import { useTest, type TestInHand } from './use-test';
 import { stepWords } from './words';
+import { guidedTest } from '../../words/shutdown-test';
 
 type Step = 'plan' | 'caution' | 'sign' | number;
 
@@ -49,30 +49,30 @@ export function GuidedTest({ initial, person, mayRun }: Props) {
   };
   const words = stepWords(page, record, step);
   const steps: { step: Step; label: string; done: boolean; open: boolean }[] = [
-    { step: 'plan', label: 'Who and what', done: record.plan !== null, open: true },
-    { step: 'caution', label: 'Caution', done: record.caution !== null, open: record.plan !== null },
+    { step: 'plan', label: guidedTest.whoAndWhat, done: record.plan !== null, open: true },
+    { step: 'caution', label: guidedTest.caution, done: record.caution !== null, open: record.plan !== null },
     ...record.rounds.map((r, i) => ({
       step: i,
       label: roundName(page.facts, r.transmitter),
       done: r.ended !== null,
       open: record.caution !== null,
     })),
-    { step: 'sign', label: 'Verdict and signature', done: false, open: record.caution !== null },
+    { step: 'sign', label: guidedTest.verdictAndSignature, done: false, open: record.caution !== null },
   ];
   return (
     <>
       <Heading
         crumbs={[
-          { label: 'Commissioning', href: paths.commissioning() },
+          { label: guidedTest.commissioning, href: paths.commissioning() },
           { label: page.site.name, href: paths.commissioningSite(page.site.id) },
-          { label: 'Shutdown tests', href: paths.shutdownTests(page.site.id) },
+          { label: guidedTest.shutdownTests, href: paths.shutdownTests(page.site.id) },
         ]}
         finding={words.heading}
         sentence={words.sentence}
       />
       <Told test={test} />
       <div className="grid gap-5 lg:grid-cols-[220px_minmax(0,1fr)]">
-        <nav aria-label="Steps of the test" className="no-print">
+        <nav aria-label={guidedTest.stepsOfTheTest} className="no-print">
           <ol className="flex flex-wrap gap-x-2 lg:block">
             {steps.map((s, i) => (
               <li key={String(s.step)}>
@@ -86,7 +86,7 @@ export function GuidedTest({ initial, person, mayRun }: Props) {
                   <span aria-hidden="true">{s.done ? '✓' : `${i + 1}.`}</span>
                   <span className={s.step === step ? '' : 'sr-only lg:not-sr-only'}>
                     {s.label}
-                    {s.done && <span className="sr-only">, done</span>}
+                    {s.done && <span className="sr-only">{guidedTest.done}</span>}
                   </span>
                 </button>
               </li>
@@ -117,8 +117,8 @@ export function GuidedTest({ initial, person, mayRun }: Props) {
                 kind="empty"
                 title={
                   record.plan
-                    ? `${record.plan.onSite} is on site, ${record.plan.operator} operates the initiator`
-                    : 'Nothing is planned yet'
+                    ? guidedTest.isOnSiteOperates(record.plan.onSite, record.plan.operator)
+                    : guidedTest.nothingIsPlannedYet
                 }
               />
             ))}
@@ -136,14 +136,16 @@ export function GuidedTest({ initial, person, mayRun }: Props) {
             ) : (
               <Notice
                 kind="empty"
-                title={record.caution ? `Accepted by ${record.caution.name}` : 'Not accepted yet'}
+                title={
+                  record.caution ? guidedTest.acceptedBy(record.caution.name) : guidedTest.notAcceptedYet
+                }
               />
             ))}
           {typeof step === 'number' && record.rounds[step] && (
             <>
               <div className="mb-5">
-                <Caution strong="Treat every conductor as live.">
-                  Shutdown is not isolation. Wakeline switches nothing; a person does.
+                <Caution strong={guidedTest.treatEveryConductorAs}>
+                  {guidedTest.shutdownIsNotIsolation}
                 </Caution>
               </div>
               <RoundStep key={step} test={test} index={step} mayWrite={mayWrite} onEnded={() => go(step)} />
@@ -191,7 +193,7 @@ function AfterRound({
   return (
     <div className="mt-5 flex flex-wrap gap-2">
       <Button weight="primary" onClick={() => go(next ?? 'sign')}>
-        {next === undefined ? 'Go to the verdict' : `Go to round ${next + 1}`}
+        {next === undefined ? guidedTest.goToTheVerdict : guidedTest.goToRound(next)}
       </Button>
       {mayWrite && (
         <Button
@@ -200,7 +202,7 @@ function AfterRound({
             go(record.rounds.length);
           }}
         >
-          Another round: {roundName(page.facts, transmitter)}
+          {guidedTest.anotherRound(roundName(page.facts, transmitter))}
         </Button>
       )}
     </div>
@@ -214,34 +216,25 @@ function Told({ test }: { test: TestInHand }) {
   return (
     <div className="mb-4 grid gap-3 empty:hidden" aria-live="polite">
       {page.ended && (
-        <Notice
-          kind="stale"
-          title={`Ended without a signature by ${page.ended.by}, ${clock(page.ended.at, zone)}`}
-        >
+        <Notice kind="stale" title={guidedTest.endedWithoutSignatureBy(page.ended.by, page.ended.at, zone)}>
           {page.ended.reason}
         </Notice>
       )}
       {page.state === 'draft' && page.others.length > 0 && (
         <Notice
           kind="stale"
-          title={`${page.others.map((o) => o.name).join(', ')} ${page.others.length === 1 ? 'is' : 'are'} at this test too`}
+          title={guidedTest.atThisTestToo(page.others.map((o) => o.name).join(', '), page.others.length)}
         >
-          Last entry {clock(page.others.at(-1)!.at, zone)}. You see what they save, and they see yours; agree
-          who reads and who watches.
+          {guidedTest.lastEntryYouSee(page.others.at(-1)!.at, zone)}
         </Notice>
       )}
       {waiting > 0 && (
-        <Notice
-          kind="stale"
-          title={`${waiting} ${waiting === 1 ? 'entry waits' : 'entries wait'} on this phone`}
-        >
-          {problem?.status === 401
-            ? 'You are signed out: sign in again in another tab; nothing is lost.'
-            : 'They are kept here, with their times, and sent when the network is back.'}
+        <Notice kind="stale" title={guidedTest.onThisPhone(waiting)}>
+          {problem?.status === 401 ? guidedTest.youAreSignedOut : guidedTest.theyAreKeptHere}
         </Notice>
       )}
       {waiting === 0 && problem && (
-        <Notice kind="stale" title="The newest could not be read">
+        <Notice kind="stale" title={guidedTest.theNewestCouldNot}>
           {problem.message}
         </Notice>
       )}
@@ -249,8 +242,8 @@ function Told({ test }: { test: TestInHand }) {
         <Notice
           key={r.id}
           kind="failed"
-          title={`Not taken: ${r.act.kind.replaceAll('_', ' ')}, ${clock(r.at, zone)}`}
-          action={<Button onClick={() => test.forget(r.id)}>Remove it</Button>}
+          title={guidedTest.notTaken(r.act.kind.replaceAll('_', ' '), r.at, zone)}
+          action={<Button onClick={() => test.forget(r.id)}>{guidedTest.removeIt}</Button>}
         >
           {r.why}
         </Notice>
@@ -282,20 +275,20 @@ function EndTest({ test }: { test: TestInHand }) {
         className="target mt-2 text-sm text-petrol underline underline-offset-2"
         onClick={() => setOpen(true)}
       >
-        End without signing …
+        {guidedTest.endWithoutSigning}
       </button>
-      <Dialog open={open} title="End this test without a signature" onClose={() => setOpen(false)}>
+      <Dialog open={open} title={guidedTest.endThisTestWithout} onClose={() => setOpen(false)}>
         <form onSubmit={submit} noValidate>
-          <p className="mb-3">What was written stays readable in the list. It counts as no test.</p>
+          <p className="mb-3">{guidedTest.whatWasWrittenStays}</p>
           <Field
-            label="Why"
+            label={guidedTest.why}
             maxLength={2000}
             value={reason}
             error={fault}
             onChange={(e) => setReason(e.target.value)}
           />
           <Button type="submit" weight="primary" className="mt-3" disabled={end.isPending}>
-            End the test
+            {guidedTest.endTheTest}
           </Button>
         </form>
       </Dialog>

@@ -9,13 +9,19 @@ import type { ShutdownTestPage } from '../../schemas/api/shutdown-test';
 import { readTyped, typedText, writeTyped } from './kept';
 import { formOf, planForm, readPlan, type PlanForm } from './plan-form';
 import { roundName, roundsNeeded } from './round';
+import { planStep } from '../../words/shutdown-test';
 
-const LIGHT_WORDS = { bright: 'Bright', dull: 'Dull', snow: 'Snow on modules', night: 'Night' } as const;
+const LIGHT_WORDS = {
+  bright: planStep.bright,
+  dull: planStep.dull,
+  snow: planStep.snowOnModules,
+  night: planStep.night,
+} as const;
 const CATEGORY_WORDS = {
-  'CAT IV': 'CAT IV',
-  'CAT III': 'CAT III',
-  'CAT II': 'CAT II',
-  none: 'No mark',
+  'CAT IV': planStep.catIV,
+  'CAT III': planStep.catIII,
+  'CAT II': planStep.catII,
+  none: planStep.noMark,
 } as const;
 
 const never = () => () => undefined;
@@ -67,21 +73,21 @@ export function PlanStep({ page, plan, person, now, onPlanned }: Props) {
     value: form[field],
     onChange: (e: { target: { value: string } }) => change({ [field]: e.target.value }),
     error: fault(field),
-    autoComplete: 'off',
+    autoComplete: planStep.off,
   });
   return (
     <form onSubmit={submit} noValidate className="grid gap-5">
-      <Sheet id="people" title="Who is there">
+      <Sheet id="people" title={planStep.whoIsThere}>
         <div className="grid gap-4 sm:grid-cols-2">
-          <Field label="Person on site" hint="In charge of the test." {...text('onSite')} />
+          <Field label={planStep.personOnSite} hint={planStep.inChargeOfThe} {...text('onSite')} />
           <Field
-            label="Who operates the initiator"
+            label={planStep.whoOperatesTheInitiator}
             hint={`${facts.initiator.name}${facts.initiator.place ? `, ${facts.initiator.place}` : ''}`}
             {...text('operator')}
           />
           <Field
-            label="Others present"
-            hint="Witnesses, the customer; may stay empty."
+            label={planStep.othersPresent}
+            hint={planStep.witnessesTheCustomerMay}
             className="sm:col-span-2"
             {...text('others')}
           />
@@ -89,11 +95,11 @@ export function PlanStep({ page, plan, person, now, onPlanned }: Props) {
       </Sheet>
       <Sheet
         id="what"
-        title={`What is tested: ${facts.zone.name}`}
-        aside={`${form.strings.length} of ${facts.strings.length} strings`}
+        title={planStep.whatIsTested(facts.zone.name)}
+        aside={planStep.ofStrings(form.strings.length, facts.strings.length)}
       >
         <fieldset>
-          <legend className="sr-only">Strings</legend>
+          <legend className="sr-only">{planStep.strings}</legend>
           <div className="grid grid-cols-3 gap-1 sm:grid-cols-5 lg:grid-cols-8">
             {facts.strings.map((s) => (
               <label key={s.id} className="flex min-h-[44px] items-center gap-2">
@@ -119,7 +125,7 @@ export function PlanStep({ page, plan, person, now, onPlanned }: Props) {
             </p>
           )}
         </fieldset>
-        <h3 className="mt-4 font-medium">Rounds</h3>
+        <h3 className="mt-4 font-medium">{planStep.rounds}</h3>
         <ol className="mt-1">
           {needed.map((r, i) => (
             <li key={r ?? 'initiator'} className="flex min-h-[44px] items-center gap-2">
@@ -141,38 +147,33 @@ export function PlanStep({ page, plan, person, now, onPlanned }: Props) {
                       })
                     }
                   />
-                  {i + 1}. {roundName(facts, r)}, the others running
+                  {planStep.theOthersRunning(i, roundName(facts, r))}
                 </label>
               )}
             </li>
           ))}
         </ol>
-        {needed.length > 1 && (
-          <p className="text-sm text-ink-2">
-            A string that hears a neighbour’s transmitter shows itself only while its own is off and the
-            others run.
-          </p>
-        )}
+        {needed.length > 1 && <p className="text-sm text-ink-2">{planStep.aStringThatHears}</p>}
       </Sheet>
-      <Sheet id="light" title="Light and weather">
+      <Sheet id="light" title={planStep.lightAndWeather}>
         <Segmented
           look="bold"
-          label="Light on the modules"
+          label={planStep.lightOnTheModules}
           value={form.light}
           options={LIGHTS.map((value) => ({ value, label: LIGHT_WORDS[value] }))}
           onChange={(light) => change({ light })}
         />
         {(form.light === 'night' || form.light === 'snow') && (
-          <p className="mt-2 text-rust-ink">A dead string in this light proves nothing: nothing can pass.</p>
+          <p className="mt-2 text-rust-ink">{planStep.aDeadStringIn}</p>
         )}
         <Field
-          label="Weather"
-          hint="Clear, cloud passing, 12 °C, wind …"
+          label={planStep.weather}
+          hint={planStep.clearCloudPassing12}
           className="mt-4"
           {...text('weather')}
         />
       </Sheet>
-      <Sheet id="instrument" title="Instrument">
+      <Sheet id="instrument" title={planStep.instrument}>
         <label className="mb-3 flex min-h-[44px] items-center gap-3">
           <input
             type="checkbox"
@@ -180,24 +181,24 @@ export function PlanStep({ page, plan, person, now, onPlanned }: Props) {
             checked={form.withInstrument}
             onChange={(e) => change({ withInstrument: e.target.checked })}
           />
-          A rated instrument is used at the home runs
+          {planStep.aRatedInstrumentIs}
         </label>
         {form.withInstrument ? (
           <div className="grid gap-4 sm:grid-cols-2">
-            <Field label="Make and model" {...text('name')} />
-            <Field label="Serial number" {...text('serial')} />
+            <Field label={planStep.makeAndModel} {...text('name')} />
+            <Field label={planStep.serialNumber} {...text('serial')} />
             <div>
-              <p className="mb-1 font-medium">Measurement category at its input</p>
+              <p className="mb-1 font-medium">{planStep.measurementCategoryAtIts}</p>
               <Segmented
                 look="bold"
-                label="Measurement category"
+                label={planStep.measurementCategory}
                 value={form.category}
                 options={CATEGORIES.map((value) => ({ value, label: CATEGORY_WORDS[value] }))}
                 onChange={(category) => change({ category })}
               />
             </div>
-            <Field label="Rated voltage of that category" unit="V" inputMode="decimal" {...text('ratedV')} />
-            <Field label="Calibrated on" type="date" {...text('calibratedOn')} />
+            <Field label={planStep.ratedVoltageOfThat} unit="V" inputMode="decimal" {...text('ratedV')} />
+            <Field label={planStep.calibratedOn} type="date" {...text('calibratedOn')} />
             <label className="flex min-h-[44px] items-center gap-3 self-end">
               <input
                 type="checkbox"
@@ -205,13 +206,11 @@ export function PlanStep({ page, plan, person, now, onPlanned }: Props) {
                 checked={form.provedBefore}
                 onChange={(e) => change({ provedBefore: e.target.checked })}
               />
-              Proved on a known source just now
+              {planStep.provedOnAKnown}
             </label>
           </div>
         ) : (
-          <p className="text-ink-2">
-            Without one the test can be consistent at best: inverters can not read a few volts.
-          </p>
+          <p className="text-ink-2">{planStep.withoutOneTheTest}</p>
         )}
       </Sheet>
       <div>
@@ -221,7 +220,7 @@ export function PlanStep({ page, plan, person, now, onPlanned }: Props) {
           </p>
         )}
         <Button type="submit" weight="primary" className="w-full sm:w-auto">
-          {plan ? 'Save these changes' : 'Save and read the caution'}
+          {plan ? planStep.saveTheseChanges : planStep.saveAndReadThe}
         </Button>
       </div>
     </form>

@@ -7,11 +7,12 @@ import { Segmented } from '../../components/ui/Segmented';
 import type { Act, Voltages } from '../../domain/commissioning/shutdown-test-record';
 import { typedNumber } from '../../schemas/typed-number';
 import type { StringNow } from './round';
+import { readingEntry } from '../../words/shutdown-test';
 
 const PLACES = [
-  { key: 'positiveToNegativeV', label: '+ to −' },
-  { key: 'positiveToEarthV', label: '+ to earth' },
-  { key: 'negativeToEarthV', label: '− to earth' },
+  { key: 'positiveToNegativeV', label: readingEntry.to },
+  { key: 'positiveToEarthV', label: readingEntry.toEarth },
+  { key: 'negativeToEarthV', label: readingEntry.toEarth2 },
 ] as const satisfies readonly { key: keyof Voltages; label: string }[];
 type Place = (typeof PLACES)[number]['key'];
 const EMPTY: Record<Place, string> = { positiveToNegativeV: '', positiveToEarthV: '', negativeToEarthV: '' };
@@ -62,11 +63,11 @@ export function ReadingEntry({ string, round, moment, timeLimitS, clockS, onSave
     }
     const after =
       moment === 'after'
-        ? typedNumber(seconds.text, 'Seconds after the command', { min: 0, max: 7200, unit: 's' })
+        ? typedNumber(seconds.text, readingEntry.secondsAfterTheCommand, { min: 0, max: 7200, unit: 's' })
         : null;
     if (after?.fault) found.afterS = after.fault;
     if (Object.values(voltages).every((v) => v === null) && Object.keys(found).length === 0)
-      found.all = 'Type at least one voltage.';
+      found.all = readingEntry.typeAtLeastOne;
     setFaults(found);
     if (Object.keys(found).length > 0) return;
     onSave({
@@ -91,16 +92,16 @@ export function ReadingEntry({ string, round, moment, timeLimitS, clockS, onSave
     <form onSubmit={submit} noValidate className="space-y-3">
       {sinceS !== null && (
         <p className="text-[17px] font-semibold tabular-nums" role="timer">
-          {Math.floor(sinceS)} s since the command
+          {readingEntry.sinceTheCommand(Math.floor(sinceS))}
         </p>
       )}
       <p className="text-ink-2">
         {moment === 'before'
-          ? 'Before the command: + to − shows that the string is live and the instrument reads it.'
-          : `At most ${string.limitV} V may stand here ${timeLimitS} s after the command, any two conductors or to earth.`}
+          ? readingEntry.beforeTheCommandTo
+          : readingEntry.atMostMayStand(string.limitV, timeLimitS)}
       </p>
       <fieldset className="grid gap-1.5">
-        <legend className="sr-only">Voltages of {string.part.name}</legend>
+        <legend className="sr-only">{readingEntry.voltagesOf(string.part.name)}</legend>
         {PLACES.map(({ key, label }) => {
           const value = typedNumber(text[key], label, VOLTS).value;
           const over = moment === 'after' && value !== null && Math.abs(value) > string.limitV;
@@ -114,7 +115,7 @@ export function ReadingEntry({ string, round, moment, timeLimitS, clockS, onSave
               </label>
               <button
                 type="button"
-                aria-label={`Change the sign of ${label}`}
+                aria-label={readingEntry.changeTheSignOf(label)}
                 onClick={() => {
                   setPlace(key);
                   setText({ ...text, [key]: pressed(text[key], 'sign') });
@@ -151,8 +152,8 @@ export function ReadingEntry({ string, round, moment, timeLimitS, clockS, onSave
                 {moment === 'before' || value === null
                   ? ''
                   : over
-                    ? `over ${string.limitV} V`
-                    : `within ${string.limitV} V`}
+                    ? readingEntry.overLimitVV(string.limitV)
+                    : readingEntry.withinLimitVV(string.limitV)}
               </span>
             </div>
           );
@@ -160,7 +161,7 @@ export function ReadingEntry({ string, round, moment, timeLimitS, clockS, onSave
       </fieldset>
       {moment === 'after' && (
         <Field
-          label="Read so long after the command"
+          label={readingEntry.readSoLongAfter}
           unit="s"
           inputMode="decimal"
           autoComplete="off"
@@ -169,26 +170,28 @@ export function ReadingEntry({ string, round, moment, timeLimitS, clockS, onSave
           error={faults.afterS}
           hint={
             seconds.text === ''
-              ? 'Noted at the first key; correct it by your stopwatch.'
-              : `${seconds.from === 'clock' ? 'By this page’s clock' : 'As typed'}: ${Number(seconds.text.replace(',', '.')) <= timeLimitS ? 'within' : 'after'} the ${timeLimitS} s.`
+              ? readingEntry.notedAtTheFirst
+              : readingEntry.fromNTheTimeLimitS(
+                  seconds.from,
+                  Number(seconds.text.replace(',', '.')),
+                  timeLimitS,
+                )
           }
           onChange={(e) => setSeconds({ text: e.target.value, from: 'typed' })}
         />
       )}
       <Segmented
         look="bold"
-        label="Where it was read"
+        label={readingEntry.whereItWasRead}
         name={`${id}-end`}
         value={end}
         options={[
-          { value: 'inverter', label: 'At the inverter’s end' },
-          { value: 'elsewhere', label: 'Elsewhere' },
+          { value: 'inverter', label: readingEntry.atTheInvertersEnd },
+          { value: 'elsewhere', label: readingEntry.elsewhere },
         ]}
         onChange={setEnd}
       />
-      {end === 'elsewhere' && (
-        <p className="text-sm text-ink-2">Kept, but only the inverter’s end decides.</p>
-      )}
+      {end === 'elsewhere' && <p className="text-sm text-ink-2">{readingEntry.keptButOnlyThe}</p>}
       <NumberPad
         onKey={(k) => typed(pressed(text[place], k))}
         onDone={next}
@@ -201,9 +204,9 @@ export function ReadingEntry({ string, round, moment, timeLimitS, clockS, onSave
       )}
       <div className="flex flex-wrap gap-2">
         <Button type="submit" weight="primary" className="flex-1">
-          Save this reading
+          {readingEntry.saveThisReading}
         </Button>
-        <Button onClick={onClose}>Cancel</Button>
+        <Button onClick={onClose}>{readingEntry.cancel}</Button>
       </div>
     </form>
   );

@@ -4,6 +4,7 @@ import { ApiError, api } from '../../lib/api';
 import { queryClient } from '../../lib/query-client';
 import { paths } from '../../schemas/paths';
 import type { StartTest } from '../../schemas/api/shutdown-test';
+import { repeatTest } from '../../words/shutdown-test';
 
 interface Props {
   siteId: string;
@@ -32,14 +33,14 @@ export function RepeatTest({ siteId, zone, follows, label, weight = 'primary' }:
         disabled={start.isPending}
         onClick={() => start.mutate({ zone, ...(follows ? { follows } : {}) })}
       >
-        {start.isPending ? 'Starting …' : label}
+        {start.isPending ? repeatTest.starting : label}
       </Button>
       {start.error && (
         <div role="alert" className="mt-2 max-w-[420px] text-sm text-rust-ink">
           <p>{start.error.message}</p>
           {open && (
             <ButtonLink className="mt-2" href={paths.shutdownTest(siteId, open)}>
-              Go to that test
+              {repeatTest.goToThatTest}
             </ButtonLink>
           )}
         </div>

@@ -5,7 +5,7 @@ import { Heading } from '../../components/ui/Heading';
 import { Notice } from '../../components/ui/Notice';
 import { Sheet } from '../../components/ui/Sheet';
 import { RESULT_MEANS } from '../../domain/commissioning/shutdown-test-words';
-import { counted, listed, volts } from '../../drawings/numbers';
+import { listed, volts } from '../../drawings/numbers';
 import { clockSeconds, fullTime, longDate } from '../../drawings/times';
 import { paths } from '../../schemas/paths';
 import type { ShutdownTestReport, SignedTest } from '../../schemas/api/shutdown-test';
@@ -14,6 +14,7 @@ import { RepeatTest } from './RepeatTest';
 import { RoundDrawing } from './RoundDrawing';
 import { readingWords } from './StringRows';
 import { roundName, stringsConcerned, stringsOfRound } from './round';
+import { shutdownTestReportReport } from '../../words/shutdown-test-report';
 
 interface Props {
   report: ShutdownTestReport;
@@ -23,26 +24,26 @@ interface Props {
 /** A signed test with its whole evidence, on screen and on paper. */
 export function Report({ report, mayRun }: Props) {
   const { site, record, earlier } = report;
-  const zone = record?.facts.zone.name ?? earlier?.zone ?? 'The site';
+  const zone = record?.facts.zone.name ?? earlier?.zone ?? shutdownTestReportReport.theSite;
   const headline = record?.verdict.headline ?? `${zone}: ${earlier ? RESULT_MEANS[earlier.result] : ''}`;
   return (
     <>
       <Heading
         crumbs={[
-          { label: 'Commissioning', href: paths.commissioning() },
+          { label: shutdownTestReportReport.commissioning, href: paths.commissioning() },
           { label: site.name, href: paths.commissioningSite(site.id) },
-          { label: 'Shutdown tests', href: paths.shutdownTests(site.id) },
+          { label: shutdownTestReportReport.shutdownTests, href: paths.shutdownTests(site.id) },
         ]}
         finding={record ? `${zone}: ${headline}` : headline}
         sentence={
           report.signature ? (
             <>
-              Signed by <strong>{report.signature.name}</strong>,{' '}
-              {fullTime(report.signature.at, site.timeZone)}. It is never changed; only a newer one supersedes
-              it.
+              {shutdownTestReportReport.signedBy}
+              <strong>{report.signature.name}</strong>
+              {shutdownTestReportReport.itIsNeverChanged(report.signature.at, site.timeZone)}
             </>
           ) : (
-            'Recorded before tests were signed here: it says less, and nothing shows that it is unchanged.'
+            shutdownTestReportReport.recordedBeforeTestsWere
           )
         }
         actions={
@@ -52,10 +53,14 @@ export function Report({ report, mayRun }: Props) {
                 siteId={site.id}
                 zone={record.facts.zone.id}
                 follows={report.id}
-                label={record.verdict.result === 'passed' ? 'Start a newer test' : 'Repeat for what is open'}
+                label={
+                  record.verdict.result === 'passed'
+                    ? shutdownTestReportReport.startANewerTest
+                    : shutdownTestReportReport.repeatForWhatIs
+                }
               />
             )}
-            <Button onClick={printWhole}>Print</Button>
+            <Button onClick={printWhole}>{shutdownTestReportReport.print}</Button>
           </>
         }
       />
@@ -63,27 +68,24 @@ export function Report({ report, mayRun }: Props) {
         {report.supersededBy && (
           <Notice
             kind="stale"
-            title={`Superseded by the test of ${longDate(report.supersededBy.at, site.timeZone)}`}
+            title={shutdownTestReportReport.supersededByTheTest(report.supersededBy.at, site.timeZone)}
             action={
-              <ButtonLink href={paths.shutdownTest(site.id, report.supersededBy.test)}>Go to it</ButtonLink>
+              <ButtonLink href={paths.shutdownTest(site.id, report.supersededBy.test)}>
+                {shutdownTestReportReport.goToIt}
+              </ButtonLink>
             }
           >
-            It stands as it was signed; what holds today is in the newer one.
+            {shutdownTestReportReport.itStandsAsIt}
           </Notice>
         )}
         {report.late.reports > 0 && (
-          <Notice
-            kind="stale"
-            title={`${counted(report.late.reports, 'report')} of these minutes came after the signature`}
-          >
-            {listed(report.late.strings)}: the logger sent late. They don’t change what was signed. A new test
-            takes them in.
+          <Notice kind="stale" title={shutdownTestReportReport.ofTheseMinutesCame(report.late.reports)}>
+            {shutdownTestReportReport.theLoggerSentLate(listed(report.late.strings))}
           </Notice>
         )}
         {record && !report.matches && (
-          <Notice kind="failed" title="The fingerprint does not fit the data">
-            What is stored is not what was signed. Don’t rely on it; tell whoever looks after this
-            installation.
+          <Notice kind="failed" title={shutdownTestReportReport.theFingerprintDoesNot}>
+            {shutdownTestReportReport.whatIsStoredIs}
           </Notice>
         )}
       </div>
@@ -107,7 +109,12 @@ function Fact({ name, children }: { name: string; children: ReactNode }) {
   );
 }
 
-const LIGHTS = { bright: 'bright', dull: 'dull', snow: 'snow on the modules', night: 'night' } as const;
+const LIGHTS = {
+  bright: 'bright',
+  dull: 'dull',
+  snow: shutdownTestReportReport.snowOnTheModules,
+  night: 'night',
+} as const;
 
 function Whole({ report, record: signed }: { report: ShutdownTestReport; record: SignedTest }) {
   const { site } = report;
@@ -117,9 +124,8 @@ function Whole({ report, record: signed }: { report: ShutdownTestReport; record:
   return (
     <div className="grid gap-5">
       <HazardCard verdict={verdict} />
-      <Caution strong="Shutdown is not isolation.">
-        Each module and its leads to its unit stay at module voltage. Isolate, lock out, prove dead with a
-        rated meter; local code and the authority having jurisdiction come first.
+      <Caution strong={shutdownTestReportReport.shutdownIsNotIsolation}>
+        {shutdownTestReportReport.eachModuleAndIts}
       </Caution>
       <Results verdict={verdict} siteId={site.id} timeZone={site.timeZone} />
       {record.rounds.map((round, i) => {
@@ -136,7 +142,7 @@ function Whole({ report, record: signed }: { report: ShutdownTestReport; record:
           <Sheet
             key={i}
             id={`round-${i + 1}`}
-            title={`Round ${i + 1}: ${roundName(facts, round.transmitter)}`}
+            title={shutdownTestReportReport.roundIFacts(i, roundName(facts, round.transmitter))}
             aside={
               <time dateTime={round.watchStarted.at}>{fullTime(round.watchStarted.at, site.timeZone)}</time>
             }
@@ -146,26 +152,28 @@ function Whole({ report, record: signed }: { report: ShutdownTestReport; record:
             <dl className="mt-2 grid gap-x-6 sm:grid-cols-2">
               <Fact name="Command, as the logger reported it">
                 {seen?.command
-                  ? `${clockSeconds(seen.command.since, site.timeZone)}, ${seen.command.where}${seen.command.by ? `, by ${seen.command.by}` : ''}`
-                  : 'not reported'}
+                  ? `${clockSeconds(seen.command.since, site.timeZone)}, ${seen.command.where}${seen.command.by ? shutdownTestReportReport.byBy(seen.command.by) : ''}`
+                  : shutdownTestReportReport.notReported}
               </Fact>
               <Fact name="Command, as a person noted it">
                 {round.operated
                   ? `${clockSeconds(round.operated.at, site.timeZone)}, ${round.operated.by}`
-                  : 'not noted'}
+                  : shutdownTestReportReport.notNoted}
               </Fact>
               <Fact name="Release, as the logger reported it">
-                {seen?.release ? clockSeconds(seen.release.since, site.timeZone) : 'not reported'}
+                {seen?.release
+                  ? clockSeconds(seen.release.since, site.timeZone)
+                  : shutdownTestReportReport.notReported}
               </Fact>
               <Fact name="Release, as a person noted it">
                 {round.released
                   ? `${clockSeconds(round.released.at, site.timeZone)}, ${round.released.by}`
-                  : 'not noted'}
+                  : shutdownTestReportReport.notNoted}
               </Fact>
             </dl>
-            <h3 className="mt-3 font-medium">Readings of the instrument</h3>
+            <h3 className="mt-3 font-medium">{shutdownTestReportReport.readingsOfTheInstrument}</h3>
             {readings.length === 0 ? (
-              <p className="text-ink-2">None: reports alone decide nothing.</p>
+              <p className="text-ink-2">{shutdownTestReportReport.noneReportsAloneDecide}</p>
             ) : (
               <ul>
                 {strings.flatMap((s) =>
@@ -180,9 +188,9 @@ function Whole({ report, record: signed }: { report: ShutdownTestReport; record:
                         {clockSeconds(r.at, site.timeZone)}, {r.by}
                         {r.moment === 'after' &&
                           (r.secondsFrom === 'clock'
-                            ? ', seconds by the page’s clock'
-                            : ', seconds as typed')}
-                        {r.struck && `; struck by ${r.struck.by}: ${r.struck.reason}`}
+                            ? shutdownTestReportReport.secondsByThePages
+                            : shutdownTestReportReport.secondsAsTyped)}
+                        {r.struck && shutdownTestReportReport.struckBy(r.struck.by, r.struck.reason)}
                       </span>
                     </li>
                   )),
@@ -193,7 +201,7 @@ function Whole({ report, record: signed }: { report: ShutdownTestReport; record:
         );
       })}
       <div className="grid gap-5 lg:grid-cols-2">
-        <Sheet id="people" title="People and circumstances">
+        <Sheet id="people" title={shutdownTestReportReport.peopleAndCircumstances}>
           <dl>
             <Fact name="On site">{plan?.onSite}</Fact>
             <Fact name="Operated the initiator">{plan?.operator}</Fact>
@@ -218,34 +226,39 @@ function Whole({ report, record: signed }: { report: ShutdownTestReport; record:
             ))}
           </dl>
         </Sheet>
-        <Sheet id="instrument" title="Instrument">
+        <Sheet id="instrument" title={shutdownTestReportReport.instrument}>
           {instrument ? (
             <dl>
               <Fact name="Make and model">{instrument.name}</Fact>
               <Fact name="Serial number">{instrument.serial}</Fact>
               <Fact name="Rating">
-                {instrument.category === 'none' ? 'no category marked' : instrument.category},{' '}
-                {volts(instrument.ratedV)}
+                {instrument.category === 'none'
+                  ? shutdownTestReportReport.noCategoryMarked
+                  : instrument.category}
+                , {volts(instrument.ratedV)}
               </Fact>
               <Fact name="Calibrated on">{longDate(`${instrument.calibratedOn}T12:00:00Z`, 'UTC')}</Fact>
               <Fact name="Proved on a known source">
-                {instrument.provedBefore ? 'before the test' : 'not before the test'},{' '}
+                {instrument.provedBefore
+                  ? shutdownTestReportReport.beforeTheTest
+                  : shutdownTestReportReport.notBeforeTheTest}
+                ,{' '}
                 {record.provedAfter === null
-                  ? 'not after it'
+                  ? shutdownTestReportReport.notAfterIt
                   : record.provedAfter
-                    ? 'right after it'
-                    : 'wrong after it'}
+                    ? shutdownTestReportReport.rightAfterIt
+                    : shutdownTestReportReport.wrongAfterIt}
               </Fact>
             </dl>
           ) : (
-            <p>None was used.</p>
+            <p>{shutdownTestReportReport.noneWasUsed}</p>
           )}
         </Sheet>
       </div>
-      <Sheet id="signature" title="Signature">
+      <Sheet id="signature" title={shutdownTestReportReport.signature}>
         <dl className="grid gap-x-6 sm:grid-cols-2">
           <Fact name="Signed by">
-            {signed.signature.name} ({signed.signature.role}), with the password entered again
+            {shutdownTestReportReport.withThePasswordEntered(signed.signature.name, signed.signature.role)}
           </Fact>
           <Fact name="At">{fullTime(signed.signature.at, site.timeZone)}</Fact>
           <Fact name="Fingerprint as signed (SHA-256)">
@@ -254,7 +267,7 @@ function Whole({ report, record: signed }: { report: ShutdownTestReport; record:
           <Fact name="Taken again from the stored data">
             <span className="break-all">{report.recomputed}</span>{' '}
             <strong className="font-semibold">
-              {report.matches ? 'They are the same.' : 'They differ.'}
+              {report.matches ? shutdownTestReportReport.theyAreTheSame : shutdownTestReportReport.theyDiffer}
             </strong>
           </Fact>
           {report.follows && (
@@ -263,7 +276,7 @@ function Whole({ report, record: signed }: { report: ShutdownTestReport; record:
                 className="text-petrol hover:underline"
                 href={paths.shutdownTest(site.id, report.follows.test)}
               >
-                the test of {longDate(report.follows.at, site.timeZone)}
+                {shutdownTestReportReport.theTestOf(report.follows.at, site.timeZone)}
               </a>
             </Fact>
           )}
@@ -279,17 +292,17 @@ function Earlier({ report: { earlier, site } }: { report: ShutdownTestReport }) 
     <Sheet
       id="earlier"
       title={`${longDate(earlier.at, site.timeZone)}, ${earlier.madeBy}`}
-      aside={counted(earlier.strings, 'string')}
+      aside={shutdownTestReportReport.countedStringsString(earlier.strings)}
     >
       {earlier.readings.length === 0 ? (
-        <p>No readings are kept with it.</p>
+        <p>{shutdownTestReportReport.noReadingsAreKept}</p>
       ) : (
         <ul>
           {earlier.readings.map((r) => (
             <li key={r.string} className="border-b border-rule-faint py-1 last:border-b-0">
-              <strong className="font-semibold">{r.string}</strong> + to − {volts(r.volts[0])}, + to earth{' '}
-              {volts(r.volts[1])}, − to earth {volts(r.volts[2])}
-              {r.afterS !== null && `, ${Math.round(r.afterS)} s after the command`}
+              <strong className="font-semibold">{r.string}</strong>
+              {shutdownTestReportReport.toToEarthTo(r.volts[0], r.volts[1], r.volts[2])}
+              {r.afterS !== null && shutdownTestReportReport.afterTheCommand(Math.round(r.afterS))}
             </li>
           ))}
         </ul>

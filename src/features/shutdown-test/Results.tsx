@@ -7,18 +7,22 @@ import type {
 } from '../../domain/commissioning/shutdown-test-verdict';
 import { intervalWords } from '../../domain/commissioning/shutdown-test-words';
 import { listed } from '../../drawings/numbers';
-import { longDate } from '../../drawings/times';
 import { paths } from '../../schemas/paths';
 import { ResultTag } from './ResultTag';
+import { results } from '../../words/shutdown-test-report';
 
 const UNIT_WORDS: Record<UnitVerdict['verdict'], string> = {
-  followed: 'followed',
-  late: 'followed too late',
-  not_shutting_down: 'kept passing',
-  was_down: 'in shutdown before the command: shows nothing',
-  unknown: 'nothing known',
+  followed: results.followed,
+  late: results.followedTooLate,
+  not_shutting_down: results.keptPassing,
+  was_down: results.inShutdownBeforeThe,
+  unknown: results.nothingKnown,
 };
-const BASIS = { measured: 'measured on its conductors', claim: 'by its own claim', nothing: '' } as const;
+const BASIS = {
+  measured: results.measuredOnItsConductors,
+  claim: results.byItsOwnClaim,
+  nothing: '',
+} as const;
 
 /** Treat as live: what a person must know before anything else. */
 export function HazardCard({ verdict }: { verdict: TestVerdict }) {
@@ -29,7 +33,7 @@ export function HazardCard({ verdict }: { verdict: TestVerdict }) {
       className="border-y-2 border-crimson bg-crimson-wash px-[18px] py-4"
     >
       <h2 id="live-title" className="text-lg text-crimson">
-        Treat as live: {listed(verdict.treatAsLive.map((s) => s.name))}
+        {results.treatAsLive(listed(verdict.treatAsLive.map((s) => s.name)))}
       </h2>
       <ul className="mt-2 space-y-1">
         {verdict.treatAsLive.map((s) => (
@@ -38,10 +42,7 @@ export function HazardCard({ verdict }: { verdict: TestVerdict }) {
           </li>
         ))}
       </ul>
-      <p className="mt-3">
-        The initiator does not make these strings dead. Keep people off them, tell everybody on site and
-        whoever answers for the building; isolate, lock out and prove dead with a rated meter before any work.
-      </p>
+      <p className="mt-3">{results.theInitiatorDoesNot}</p>
     </section>
   );
 }
@@ -58,21 +59,21 @@ function Units({ s }: { s: StringVerdict }) {
   return (
     <details className="print:open:block">
       <summary className="inline-flex min-h-[44px] cursor-pointer items-center text-sm underline underline-offset-2">
-        {[followed.length > 0 ? `${followed.length} units followed` : '', ...rest]
+        {[followed.length > 0 ? results.unitsFollowed(followed.length) : '', ...rest]
           .filter(Boolean)
-          .join(', ') || 'Units'}
+          .join(', ') || results.units}
       </summary>
       <ul className="grid gap-x-6 text-sm sm:grid-cols-2">
         {s.units.map((u) => (
           <li key={u.position} className="flex flex-wrap gap-x-2 border-b border-rule-faint py-1">
             <span className="w-6 flex-none text-right font-semibold">{u.position}</span>
-            <span className="text-ink-2">{u.serial ?? 'no unit'}</span>
+            <span className="text-ink-2">{u.serial ?? results.noUnit}</span>
             {u.serial !== null && (
               <span className={u.verdict === 'not_shutting_down' ? 'font-semibold text-crimson' : ''}>
                 {UNIT_WORDS[u.verdict]}
                 {u.followed && ` ${intervalWords(u.followed)}`}
                 {u.basis !== 'nothing' && `, ${BASIS[u.basis]}`}
-                {u.stuck && ', did not come back'}
+                {u.stuck && results.didNotComeBack}
               </span>
             )}
           </li>
@@ -92,8 +93,8 @@ interface Props {
 export function Results({ verdict, siteId, timeZone }: Props) {
   return (
     <>
-      <Sheet id="results" title="Result by string" aside={`limits: ${verdict.limits.source}`}>
-        {verdict.strings.length === 0 && <Notice kind="empty" title="No string has been tested yet" />}
+      <Sheet id="results" title={results.resultByString} aside={results.limitsSource(verdict.limits.source)}>
+        {verdict.strings.length === 0 && <Notice kind="empty" title={results.noStringHasBeen} />}
         <ul className="grid gap-x-10 xl:grid-cols-2">
           {verdict.strings.map((s) => (
             <li key={s.string} className="border-b border-rule-faint py-2">
@@ -108,16 +109,14 @@ export function Results({ verdict, siteId, timeZone }: Props) {
                     className="target inline-flex items-center text-petrol hover:underline"
                     href={paths.shutdownTest(siteId, s.carriedFrom.test)}
                   >
-                    Tested {longDate(s.carriedFrom.at, timeZone)}
+                    {results.testedAt(s.carriedFrom.at, timeZone)}
                   </a>
                 </p>
               ) : (
                 s.rounds.length > 1 && (
                   <ul className="mt-1 text-sm text-ink-2">
                     {s.rounds.map((r) => (
-                      <li key={r.round}>
-                        Round {r.round + 1}: {r.words}
-                      </li>
+                      <li key={r.round}>{results.roundRoundWords(r.round, r.words)}</li>
                     ))}
                   </ul>
                 )
@@ -128,18 +127,18 @@ export function Results({ verdict, siteId, timeZone }: Props) {
         </ul>
       </Sheet>
       {verdict.stuck.length > 0 && (
-        <Sheet id="stuck" title="Did not come back">
+        <Sheet id="stuck" title={results.didNotComeBack2}>
           <ul className="space-y-1">
             {verdict.stuck.map((s) => (
               <li key={s.string} className="rounded bg-rust-wash px-3 py-2 text-rust-ink">
-                {s.words}. Stuck in shutdown: they cost yield, and their modules stay at module voltage.
+                {results.stuckInShutdownThey(s.words)}
               </li>
             ))}
           </ul>
         </Sheet>
       )}
       {verdict.missing.length > 0 && (
-        <Sheet id="missing" title="What is still missing">
+        <Sheet id="missing" title={results.whatIsStillMissing}>
           <ul className="list-disc space-y-1 pl-5">
             {verdict.missing.map((m) => (
               <li key={m}>{m}</li>
@@ -148,7 +147,7 @@ export function Results({ verdict, siteId, timeZone }: Props) {
         </Sheet>
       )}
       {verdict.notes.length > 0 && (
-        <Sheet id="notes" title="To know">
+        <Sheet id="notes" title={results.toKnow}>
           <ul className="list-disc space-y-1 pl-5 text-ink-2">
             {verdict.notes.map((n) => (
               <li key={n}>{n}</li>

@@ -3,6 +3,7 @@ import type { TestVerdict } from '../../domain/commissioning/shutdown-test-verdi
 import { volts } from '../../drawings/numbers';
 import { TestLines } from '../../drawings/TestLines';
 import { linesOf, readingPoints, releasedAfterS, roundName, type StringNow } from './round';
+import { roundDrawing } from '../../words/shutdown-test';
 
 interface Props {
   facts: TestFacts;
@@ -18,8 +19,14 @@ export function RoundDrawing({ facts, strings, round, seen, limits }: Props) {
   const lines = linesOf(strings, limits.afterS, releaseS);
   const readings = readingPoints(strings);
   if (lines.every((l) => l.points.length === 0) && readings.length === 0)
-    return <p className="text-ink-2">Lines begin with the command; until then nothing is drawn.</p>;
-  const label = `${roundName(facts, round.transmitter)}: voltages of ${strings.length} strings from the command on, with limits of ${limits.outsideV} V outside and ${limits.insideV} V inside the array and of ${limits.afterS} s.`;
+    return <p className="text-ink-2">{roundDrawing.linesBeginWithThe}</p>;
+  const label = roundDrawing.voltagesOfStringsFrom(
+    roundName(facts, round.transmitter),
+    strings.length,
+    limits.outsideV,
+    limits.insideV,
+    limits.afterS,
+  );
   const drawn = { lines, readings, limits, releaseS, label };
   return (
     <>
@@ -29,27 +36,25 @@ export function RoundDrawing({ facts, strings, round, seen, limits }: Props) {
       <div className="sm:hidden print:hidden">
         <TestLines {...drawn} width={360} height={260} />
       </div>
-      <p className="mt-1 text-sm text-ink-2">
-        Lines are reports and no test. Rings are the instrument’s readings, the highest of three.
-      </p>
+      <p className="mt-1 text-sm text-ink-2">{roundDrawing.linesAreReportsAnd}</p>
       <details className="no-print mt-1">
         <summary className="inline-flex min-h-[44px] cursor-pointer items-center text-sm underline underline-offset-2">
-          The same as a table
+          {roundDrawing.theSameAsA}
         </summary>
         <table className="w-full text-left text-sm">
           <thead>
             <tr className="border-b border-rule text-ink-2">
               <th scope="col" className="py-1 pr-3 font-medium">
-                String
+                {roundDrawing.string}
               </th>
               <th scope="col" className="py-1 pr-3 font-medium">
-                Newest
+                {roundDrawing.newest}
               </th>
               <th scope="col" className="py-1 pr-3 font-medium">
-                At or under its limit
+                {roundDrawing.atOrUnderIts}
               </th>
               <th scope="col" className="py-1 font-medium">
-                From
+                {roundDrawing.from}
               </th>
             </tr>
           </thead>
@@ -58,12 +63,14 @@ export function RoundDrawing({ facts, strings, round, seen, limits }: Props) {
               <tr key={s.part.id} className="border-b border-rule-faint">
                 <td className="py-1 pr-3 font-semibold">{s.part.name}</td>
                 <td className="py-1 pr-3">
-                  {s.newest ? `${volts(s.newest.volts)} after ${Math.round(s.newest.afterS)} s` : 'not known'}
+                  {s.newest
+                    ? roundDrawing.nAfterAfterSS(s.newest.volts, Math.round(s.newest.afterS))
+                    : roundDrawing.notKnown}
                 </td>
                 <td className="py-1 pr-3">
                   {s.underFromS === null
-                    ? `not under ${s.limitV} V`
-                    : `${s.limitV} V after ${Math.ceil(s.underFromS)} s`}
+                    ? roundDrawing.notUnder(s.limitV)
+                    : roundDrawing.limitVVAfterUnderFromS(s.limitV, Math.ceil(s.underFromS))}
                 </td>
                 <td className="py-1 text-ink-2">{s.source}</td>
               </tr>

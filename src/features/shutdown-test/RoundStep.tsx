@@ -12,6 +12,7 @@ import { RoundDrawing } from './RoundDrawing';
 import { StringRows } from './StringRows';
 import { commandedAtS, returnOf, roundName, stringsConcerned, stringsOfRound, type StringNow } from './round';
 import type { TestInHand } from './use-test';
+import { roundStep } from '../../words/shutdown-test';
 
 const mmss = (s: number): string => `${Math.floor(s / 60)}:${String(Math.floor(s % 60)).padStart(2, '0')}`;
 
@@ -51,29 +52,27 @@ export function RoundStep({ test, index, mayWrite, onEnded }: Props) {
     round.transmitter === null
       ? facts.initiator.name
       : roundName(facts, round.transmitter).replace(' off alone', '');
-  const verb = round.transmitter === null ? 'operated' : 'taken off';
+  const verb = round.transmitter === null ? 'operated' : roundStep.takenOff;
   const back = returnOf(seen);
   if (round.watchStarted === null)
     return (
       <Sheet
         id="round"
-        title={`Round ${index + 1} of ${record.rounds.length}: ${roundName(facts, round.transmitter)}`}
+        title={roundStep.roundOf(index, record.rounds.length, roundName(facts, round.transmitter))}
       >
         <WatchState test={test} />
         {round.transmitter !== null && (
           <p className="mb-3">
-            A person isolates the supply of {what} by hand; every other transmitter keeps running. Only{' '}
-            {strings.map((s) => s.part.name).join(', ') || 'no string'} may shut down.
+            {roundStep.personIsolatesTheSupply(what, strings.map((s) => s.part.name).join(', '))}
           </p>
         )}
         {watch.inForce.length > 0 && (
           <div className="mb-3">
             <Notice
               kind="stale"
-              title={`${watch.inForce.map((c) => c.where).join(', ')}: shutdown is in force already`}
+              title={roundStep.shutdownIsInForce(watch.inForce.map((c) => c.where).join(', '))}
             >
-              Since {clock(watch.inForce[0]!.since, zone)}. Release it and let the strings come back: what is
-              down before the command shows nothing.
+              {roundStep.sinceReleaseItAnd(watch.inForce[0]!.since, zone)}
             </Notice>
           </div>
         )}
@@ -83,7 +82,7 @@ export function RoundStep({ test, index, mayWrite, onEnded }: Props) {
             className="w-full sm:w-auto"
             onClick={() => act({ kind: 'watch_started', round: index })}
           >
-            Start watching
+            {roundStep.startWatching}
           </Button>
         )}
       </Sheet>
@@ -93,27 +92,29 @@ export function RoundStep({ test, index, mayWrite, onEnded }: Props) {
       <Clock sinceS={sinceS} limitS={timeLimitS} released={released} />
       <Sheet
         id="round"
-        title={`Round ${index + 1} of ${record.rounds.length}: ${roundName(facts, round.transmitter)}`}
-        aside={`watched since ${clockSeconds(round.watchStarted.at, zone)}`}
+        title={roundStep.roundOf(index, record.rounds.length, roundName(facts, round.transmitter))}
+        aside={roundStep.watchedSince(round.watchStarted.at, zone)}
       >
         <WatchState test={test} />
         <dl className="mt-1 text-sm text-ink-2">
           <div className="flex flex-wrap gap-x-2">
-            <dt>Command by the logger’s report:</dt>
+            <dt>{roundStep.commandByTheLoggers}</dt>
             <dd>
               {seen?.command
                 ? `${clockSeconds(seen.command.since, zone)}, ${seen.command.where}`
-                : 'none yet'}
+                : roundStep.noneYet}
               {seen?.command &&
                 !round.ended &&
                 !released &&
-                ` (${mmss(Math.max(0, now / 1000 - Date.parse(seen.command.since) / 1000))} ago)`}
+                roundStep.mmssAgo(mmss(Math.max(0, now / 1000 - Date.parse(seen.command.since) / 1000)))}
             </dd>
           </div>
           <div className="flex flex-wrap gap-x-2">
-            <dt>As a person noted it:</dt>
+            <dt>{roundStep.asAPersonNoted}</dt>
             <dd>
-              {round.operated ? `${clockSeconds(round.operated.at, zone)}, ${round.operated.by}` : 'not yet'}
+              {round.operated
+                ? `${clockSeconds(round.operated.at, zone)}, ${round.operated.by}`
+                : roundStep.notYet}
             </dd>
           </div>
         </dl>
@@ -124,13 +125,12 @@ export function RoundStep({ test, index, mayWrite, onEnded }: Props) {
                 <p>
                   {round.transmitter === null ? (
                     <>
-                      When + to − of each string is read,{' '}
-                      <strong className="font-semibold">{record.plan?.operator}</strong> operates {what}
-                      {facts.initiator.place && ` (${facts.initiator.place})`} by hand. Wakeline switches
-                      nothing; it only notes the time.
+                      {roundStep.whenToOfEach}
+                      <strong className="font-semibold">{record.plan?.operator}</strong>
+                      {roundStep.operatesWhatPlacePlace(what, facts.initiator.place)}
                     </>
                   ) : (
-                    <>A person takes {what} off by hand. Wakeline switches nothing; it only notes the time.</>
+                    <>{roundStep.personTakesOffBy(what)}</>
                   )}
                 </p>
                 <Button
@@ -138,22 +138,21 @@ export function RoundStep({ test, index, mayWrite, onEnded }: Props) {
                   className="min-h-[64px] w-full text-[17px]"
                   onClick={() => act({ kind: 'operated', round: index })}
                 >
-                  {what === facts.initiator.name ? 'Initiator' : what} {verb} now: note the time
+                  {roundStep.nowNoteTheTime(what, facts.initiator.name, verb)}
                 </Button>
               </>
             )}
             {round.operated && !round.released && (
               <>
                 <Button className="w-full" onClick={() => act({ kind: 'released', round: index })}>
-                  {round.transmitter === null ? 'Initiator released' : `${what} running`} again now: note the
-                  time
+                  {roundStep.transmitterNullInitiatorReleased(round.transmitter, what)}
                 </Button>
                 <button
                   type="button"
                   className="target justify-self-start text-sm text-petrol underline underline-offset-2"
                   onClick={() => act({ kind: 'operated_withdrawn', round: index })}
                 >
-                  Take the noted time back: it was not {verb} yet
+                  {roundStep.takeTheNotedTime(verb)}
                 </button>
               </>
             )}
@@ -161,12 +160,10 @@ export function RoundStep({ test, index, mayWrite, onEnded }: Props) {
               <div className="border-t border-rule-faint pt-3">
                 <p role="status">
                   {back.gone === 0
-                    ? 'No unit told that it went, so none can tell that it came back.'
-                    : `${back.back} of ${back.gone} units that went have come back${back.held > 0 ? `; ${back.held} are still in shutdown` : ''}.`}
+                    ? roundStep.noUnitToldThat
+                    : roundStep.backOfGoneUnits(back.back, back.gone, back.held)}
                 </p>
-                <p className="mt-1 text-sm text-ink-2">
-                  Give them a few reports. What does not come back is stuck: the verdict names it.
-                </p>
+                <p className="mt-1 text-sm text-ink-2">{roundStep.giveThemAFew}</p>
                 <Button
                   weight="primary"
                   className="mt-2 w-full sm:w-auto"
@@ -175,7 +172,7 @@ export function RoundStep({ test, index, mayWrite, onEnded }: Props) {
                     onEnded();
                   }}
                 >
-                  End this round
+                  {roundStep.endThisRound}
                 </Button>
               </div>
             )}
@@ -184,8 +181,8 @@ export function RoundStep({ test, index, mayWrite, onEnded }: Props) {
       </Sheet>
       <Sheet
         id="strings"
-        title={originS === null ? 'Before the command' : 'Home runs at the inverter’s end'}
-        aside={`${strings.length} strings`}
+        title={originS === null ? roundStep.beforeTheCommand : roundStep.homeRunsAtThe}
+        aside={roundStep.stringsStrings(strings.length)}
       >
         <StringRows
           strings={strings}
@@ -197,12 +194,17 @@ export function RoundStep({ test, index, mayWrite, onEnded }: Props) {
           onStrike={setStrike}
         />
       </Sheet>
-      <Sheet id="lines" title="Voltage of each string" aside={`limits: ${verdict.limits.source}`} flush>
+      <Sheet
+        id="lines"
+        title={roundStep.voltageOfEachString}
+        aside={roundStep.limitsSource(verdict.limits.source)}
+        flush
+      >
         <RoundDrawing facts={facts} strings={strings} round={round} seen={seen} limits={verdict.limits} />
       </Sheet>
       <Dialog
         open={reading !== null}
-        title={reading ? `${reading.string.part.name}, home run at the inverter’s end` : ''}
+        title={reading ? roundStep.homeRunAtThe(reading.string.part.name) : ''}
         onClose={() => setReading(null)}
       >
         {reading && (
@@ -220,7 +222,7 @@ export function RoundStep({ test, index, mayWrite, onEnded }: Props) {
           />
         )}
       </Dialog>
-      <Dialog open={strike !== null} title="Strike this reading" onClose={() => setStrike(null)}>
+      <Dialog open={strike !== null} title={roundStep.strikeThisReading} onClose={() => setStrike(null)}>
         <form
           onSubmit={(event) => {
             event.preventDefault();
@@ -231,13 +233,13 @@ export function RoundStep({ test, index, mayWrite, onEnded }: Props) {
           }}
         >
           <Field
-            label="Why"
-            hint="It stays on record, struck through."
+            label={roundStep.why}
+            hint={roundStep.itStaysOnRecord}
             value={why}
             onChange={(e) => setWhy(e.target.value)}
           />
           <Button type="submit" weight="primary" className="mt-3" disabled={why.trim().length < 2}>
-            Strike it
+            {roundStep.strikeIt}
           </Button>
         </form>
       </Dialog>
@@ -251,10 +253,10 @@ function WatchState({ test: { page } }: { test: TestInHand }) {
     <div className="mb-3">
       <Notice
         kind={watch.canWatch ? 'done' : 'failed'}
-        title={watch.canWatch ? 'Watching' : 'Nothing can be watched now'}
+        title={watch.canWatch ? roundStep.watching : roundStep.nothingCanBeWatched}
       >
         {watch.words}
-        {watch.newestAt && ` Newest report ${clockSeconds(watch.newestAt, facts.site.timeZone)}.`}
+        {watch.newestAt && roundStep.newestReport(watch.newestAt, facts.site.timeZone)}
       </Notice>
     </div>
   );
@@ -270,11 +272,11 @@ function Clock({ sinceS, limitS, released }: { sinceS: number | null; limitS: nu
       </p>
       <p className="pb-2 text-right text-ink-2">
         {sinceS === null ? (
-          'since the command'
+          roundStep.sinceTheCommand
         ) : over ? (
-          <strong className="font-semibold text-ink">past the {limitS} s</strong>
+          <strong className="font-semibold text-ink">{roundStep.pastThe(limitS)}</strong>
         ) : (
-          `${Math.ceil(limitS - sinceS)} s left of ${limitS} s`
+          roundStep.leftOf(Math.ceil(limitS - sinceS), limitS)
         )}
       </p>
     </div>

@@ -12,6 +12,7 @@ import { paths } from '../../schemas/paths';
 import type { SignTest } from '../../schemas/api/shutdown-test';
 import { HazardCard, Results } from './Results';
 import type { TestInHand } from './use-test';
+import { signStep } from '../../words/shutdown-test';
 
 interface Props {
   test: TestInHand;
@@ -32,29 +33,26 @@ export function SignStep({ test, person, mayWrite, onAnotherRound }: Props) {
     <div className="grid gap-5">
       <HazardCard verdict={verdict} />
       {read && (
-        <Sheet id="proof" title="The instrument after the test">
-          <p className="mb-2">
-            Prove it again on a known source: a meter that died meanwhile reads zero on a live string. Without
-            this no reading decides.
-          </p>
+        <Sheet id="proof" title={signStep.theInstrumentAfterThe}>
+          <p className="mb-2">{signStep.proveItAgainOn}</p>
           {mayWrite ? (
             <Segmented
               look="bold"
-              label="Proved after the test"
+              label={signStep.provedAfterTheTest}
               value={record.provedAfter === null ? '' : record.provedAfter ? 'right' : 'wrong'}
               options={[
-                { value: 'right', label: 'It read the known source right' },
-                { value: 'wrong', label: 'It did not' },
+                { value: 'right', label: signStep.itReadTheKnown },
+                { value: 'wrong', label: signStep.itDidNot },
               ]}
               onChange={(v) => act({ kind: 'proved_after', proved: v === 'right' })}
             />
           ) : (
             <p>
               {record.provedAfter === null
-                ? 'Not done yet.'
+                ? signStep.notDoneYet
                 : record.provedAfter
-                  ? 'It read right.'
-                  : 'It did not read right.'}
+                  ? signStep.itReadRight
+                  : signStep.itDidNotRead}
             </p>
           )}
         </Sheet>
@@ -62,10 +60,10 @@ export function SignStep({ test, person, mayWrite, onAnotherRound }: Props) {
       <Results verdict={verdict} siteId={site.id} timeZone={site.timeZone} />
       {mayWrite && open === undefined && verdict.missing.length > 0 && (
         <div>
-          <Button onClick={onAnotherRound}>Another round by the initiator, to read what is missing</Button>
+          <Button onClick={onAnotherRound}>{signStep.anotherRoundByThe}</Button>
         </div>
       )}
-      <Sheet id="remarks" title="Remarks">
+      <Sheet id="remarks" title={signStep.remarks}>
         {record.remarks.map((r) => (
           <p key={r.at} className="mb-1">
             {r.text} <span className="text-sm text-ink-2">{r.by}</span>
@@ -82,20 +80,20 @@ export function SignStep({ test, person, mayWrite, onAnotherRound }: Props) {
             }}
           >
             <Field
-              label="Add a remark"
+              label={signStep.addARemark}
               className="min-w-[220px] flex-1"
               maxLength={1000}
               value={remark}
               onChange={(e) => setRemark(e.target.value)}
             />
-            <Button type="submit">Add it</Button>
+            <Button type="submit">{signStep.addIt}</Button>
           </form>
         )}
       </Sheet>
       {mayWrite && (
-        <Sheet id="sign" title="Sign">
+        <Sheet id="sign" title={signStep.sign}>
           {open !== undefined ? (
-            <p>Round {open + 1} is still under way: end it first.</p>
+            <p>{signStep.roundIsStillUnder(open)}</p>
           ) : (
             <SignForm
               test={test}
@@ -142,23 +140,24 @@ function SignForm({
   return (
     <form onSubmit={submit} noValidate>
       <p className="mb-3">
-        You sign as <strong className="font-semibold">{person}</strong>:{' '}
-        <strong className="font-semibold">{page.verdict.headline}</strong>. A signed test is never changed; a
-        newer one can supersede it.
-        {openRounds && ' Not every planned round was run.'}
+        {signStep.youSignAs}
+        <strong className="font-semibold">{person}</strong>:{' '}
+        <strong className="font-semibold">{page.verdict.headline}</strong>
+        {signStep.aSignedTestIs}
+        {openRounds && signStep.notEveryPlannedRound}
       </p>
       {sign.error && !fault && (
         <div className="mb-3">
           <Notice
             kind="failed"
-            title={sign.error instanceof ApiError ? sign.error.title : 'It was not signed'}
+            title={sign.error instanceof ApiError ? sign.error.title : signStep.itWasNotSigned}
           >
             {sign.error.message}
           </Notice>
         </div>
       )}
       <Field
-        label="Your password again"
+        label={signStep.yourPasswordAgain}
         type="password"
         name="password"
         autoComplete="current-password"
@@ -167,23 +166,17 @@ function SignForm({
         error={fault}
         onChange={(e) => setPassword(e.target.value)}
       />
-      {test.waiting > 0 && (
-        <p className="mt-2 text-rust-ink">
-          {test.waiting} entries wait on this phone: they must arrive before anything is signed.
-        </p>
-      )}
-      {unproved && (
-        <p className="mt-2 text-rust-ink">Say first whether the instrument was proved after the test.</p>
-      )}
+      {test.waiting > 0 && <p className="mt-2 text-rust-ink">{signStep.entriesWaitOnThis(test.waiting)}</p>}
+      {unproved && <p className="mt-2 text-rust-ink">{signStep.sayFirstWhetherThe}</p>}
       <Button
         type="submit"
         weight="primary"
         className="mt-3 w-full sm:w-auto"
         disabled={sign.isPending || password === '' || unproved || test.waiting > 0}
       >
-        {sign.isPending ? 'Signing …' : 'Sign this test'}
+        {sign.isPending ? signStep.signing : signStep.signThisTest}
       </Button>
-      <p className="mt-3 break-all text-sm text-ink-2">Fingerprint of what is shown: {page.fingerprint}</p>
+      <p className="mt-3 break-all text-sm text-ink-2">{signStep.fingerprintOfWhatIs(page.fingerprint)}</p>
     </form>
   );
 }

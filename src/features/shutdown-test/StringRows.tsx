@@ -3,24 +3,26 @@ import { Tag } from '../../components/ui/Tag';
 import { volts } from '../../drawings/numbers';
 import type { TestReading } from '../../domain/commissioning/shutdown-test-record';
 import type { StringNow } from './round';
+import { stringRows } from '../../words/shutdown-test-report';
 
 /** One reading in a line: "8.4 · 0.1 · −0.1 V at 22 s". */
 export function readingWords(r: TestReading): string {
   const { positiveToNegativeV: pn, positiveToEarthV: pe, negativeToEarthV: ne } = r.voltages;
   const figures = [
-    ['+ to −', pn],
-    ['+ to earth', pe],
-    ['− to earth', ne],
+    [stringRows.to, pn],
+    [stringRows.toEarth, pe],
+    [stringRows.toEarth2, ne],
   ] as const;
   const read = figures.flatMap(([name, v]) => (v === null ? [] : [`${name} ${volts(v)}`])).join(', ');
-  const when = r.moment === 'before' ? 'before the command' : `${Math.round(r.afterS ?? 0)} s after it`;
-  return `${read}, ${when}${r.atInverterEnd ? '' : ', not at the inverter’s end'}`;
+  const when =
+    r.moment === 'before' ? stringRows.beforeTheCommand : stringRows.afterIt(Math.round(r.afterS ?? 0));
+  return `${read}, ${when}${r.atInverterEnd ? '' : stringRows.notAtTheInverters}`;
 }
 
 function Now({ s, timeLimitS, sinceS }: { s: StringNow; timeLimitS: number; sinceS: number | null }) {
   if (sinceS === null)
-    return <span className="text-ink-2">{s.points.length > 0 ? '' : 'waiting for the command'}</span>;
-  if (!s.newest) return <span className="text-ink-2">nothing reported</span>;
+    return <span className="text-ink-2">{s.points.length > 0 ? '' : stringRows.waitingForTheCommand}</span>;
+  if (!s.newest) return <span className="text-ink-2">{stringRows.nothingReported}</span>;
   const over = s.newest.volts > s.limitV;
   const late = s.newest.afterS >= timeLimitS;
   const input = s.source.startsWith('inverter');
@@ -28,18 +30,18 @@ function Now({ s, timeLimitS, sinceS }: { s: StringNow; timeLimitS: number; sinc
     <span className="inline-flex flex-wrap items-center gap-x-2">
       <span className="tabular-nums">
         <span className="text-[17px] font-semibold">{volts(s.newest.volts)}</span>{' '}
-        <span className="text-sm text-ink-2">at {Math.round(s.newest.afterS)} s</span>
+        <span className="text-sm text-ink-2">{stringRows.atAfterSS(Math.round(s.newest.afterS))}</span>
       </span>
       {s.underFromS !== null ? (
         <Tag tone="plum" shape="▁">
-          {s.limitV} V or less {s.underFromS < 1 ? 'from the start' : `after ${Math.ceil(s.underFromS)} s`}
+          {stringRows.limitVVOrLess(s.limitV, s.underFromS, Math.ceil(s.underFromS))}
         </Tag>
       ) : over && late && !input ? (
         <Tag tone="crimson" shape="▲">
-          over {s.limitV} V past {timeLimitS} s
+          {stringRows.overPast(s.limitV, timeLimitS)}
         </Tag>
       ) : (
-        <Tag tone="outline">over {s.limitV} V</Tag>
+        <Tag tone="outline">{stringRows.overLimitVV(s.limitV)}</Tag>
       )}
     </span>
   );
@@ -72,11 +74,11 @@ export function StringRows({ strings, timeLimitS, sinceS, released, mayWrite, on
               <p className="text-[17px] font-semibold">{s.part.name}</p>
               {mayWrite && !released && (
                 <Button onClick={() => onRead(s, moment)}>
-                  {moment === 'before' ? 'Read before' : 'Add reading'}
+                  {moment === 'before' ? stringRows.readBefore : stringRows.addReading}
                   <span className="sr-only">
                     {moment === 'before'
-                      ? `the command: ${s.part.name}`
-                      : `of ${s.part.name} after the command`}
+                      ? stringRows.theCommand(s.part.name)
+                      : stringRows.ofAfterTheCommand(s.part.name)}
                   </span>
                 </Button>
               )}
@@ -86,16 +88,16 @@ export function StringRows({ strings, timeLimitS, sinceS, released, mayWrite, on
               {!released &&
                 sinceS !== null &&
                 s.part.kind !== 'shutdown_only' &&
-                `${down} of ${units.length} in shutdown, `}
+                stringRows.ofInShutdown(down, units.length)}
               {released &&
                 s.part.kind !== 'shutdown_only' &&
-                `${gone} of ${units.length} went, ${back} came back, `}
+                stringRows.ofWentCameBack(gone, units.length, back)}
               {s.newest || s.points.length > 0
                 ? s.source
                 : s.part.kind === 'shutdown_only'
-                  ? 'its units tell nothing'
+                  ? stringRows.itsUnitsTellNothing
                   : ''}
-              {!s.part.homeRunLeavesArray && ' · home run inside the array'}
+              {!s.part.homeRunLeavesArray && stringRows.homeRunInsideThe}
             </p>
             {s.readings.map((r) => (
               <p
@@ -104,7 +106,7 @@ export function StringRows({ strings, timeLimitS, sinceS, released, mayWrite, on
               >
                 <span>
                   ○ {readingWords(r)}
-                  {r.struck && ` (struck: ${r.struck.reason})`}
+                  {r.struck && stringRows.struckReason(r.struck.reason)}
                 </span>
                 {mayWrite && !r.struck && (
                   <button
@@ -112,7 +114,7 @@ export function StringRows({ strings, timeLimitS, sinceS, released, mayWrite, on
                     className="target text-petrol underline underline-offset-2"
                     onClick={() => onStrike(r)}
                   >
-                    Strike
+                    {stringRows.strike}
                   </button>
                 )}
               </p>

@@ -9,7 +9,7 @@ import { Sheet } from '../../components/ui/Sheet';
 import { Table, type Column } from '../../components/ui/Table';
 import { Tag } from '../../components/ui/Tag';
 import { SiteTime } from '../../components/ui/Time';
-import { counted, listed } from '../../drawings/numbers';
+import { listed } from '../../drawings/numbers';
 import { clock, fullTime, localDay, longDate } from '../../drawings/times';
 import { withQuery } from '../../lib/api';
 import { useViewInUrl } from '../../lib/view-in-url';
@@ -18,6 +18,7 @@ import type { ShutdownTestList, TestListView, TestRow, ZoneStanding } from '../.
 import { RepeatTest } from './RepeatTest';
 import { ResultTag } from './ResultTag';
 import { LIST_DEFAULTS, listFinding, listedTests } from './list';
+import { testList } from '../../words/shutdown-test-report';
 
 interface Props {
   list: ShutdownTestList;
@@ -34,7 +35,7 @@ export function TestList({ list, view: initial, mayRun }: Props) {
   const columns: Column<TestRow>[] = [
     {
       key: 'zone',
-      label: 'Zone',
+      label: testList.zone,
       sortable: true,
       cell: (t) => (
         <a
@@ -47,32 +48,32 @@ export function TestList({ list, view: initial, mayRun }: Props) {
     },
     {
       key: 'result',
-      label: 'Result',
+      label: testList.result,
       sortable: true,
       cell: (t) => (
         <span className="inline-flex flex-wrap items-center gap-1">
           {t.result ? (
             <ResultTag result={t.result} />
           ) : (
-            <Tag tone="outline">{t.state === 'draft' ? 'Under way' : 'Ended, not signed'}</Tag>
+            <Tag tone="outline">{t.state === 'draft' ? testList.underWay : testList.endedNotSigned}</Tag>
           )}
-          {t.superseded && <Tag>Superseded</Tag>}
+          {t.superseded && <Tag>{testList.superseded}</Tag>}
         </span>
       ),
     },
     {
       key: 'strings',
-      label: 'Strings',
+      label: testList.strings,
       from: 'md',
       cell: (t) =>
         t.state === 'signed'
-          ? `${counted(t.strings, 'string')}${t.failed > 0 ? `, ${t.failed} failed` : ''}${t.carried > 0 ? `, ${t.carried} from an earlier test` : ''}`
+          ? `${testList.countedStringsString(t.strings)}${t.failed > 0 ? testList.failedFailed(t.failed) : ''}${t.carried > 0 ? testList.fromAnEarlierTest(t.carried) : ''}`
           : t.reason,
     },
-    { key: 'by', label: 'Signed or started by', sortable: true, from: 'sm', cell: (t) => t.by },
+    { key: 'by', label: testList.signedOrStartedBy, sortable: true, from: 'sm', cell: (t) => t.by },
     {
       key: 'at',
-      label: 'When',
+      label: testList.when,
       sortable: true,
       cell: (t) => <When at={t.at} list={list} />,
     },
@@ -81,17 +82,14 @@ export function TestList({ list, view: initial, mayRun }: Props) {
     <>
       <Heading
         crumbs={[
-          { label: 'Commissioning', href: paths.commissioning() },
+          { label: testList.commissioning, href: paths.commissioning() },
           { label: site.name, href: paths.commissioningSite(site.id) },
         ]}
         finding={finding.heading}
         sentence={finding.sentence}
       />
       <div className="grid gap-5">
-        <Caution strong="Shutdown is not isolation.">
-          Each module and its leads to its unit stay at module voltage. Wakeline watches a test and keeps its
-          record; a person operates the initiator.
-        </Caution>
+        <Caution strong={testList.shutdownIsNotIsolation}>{testList.eachModuleAndIts}</Caution>
         <div className="grid gap-5 lg:grid-cols-2">
           {zones.map((z) => (
             <ZoneSheet key={z.zone.id} z={z} list={list} mayRun={mayRun} />
@@ -99,39 +97,39 @@ export function TestList({ list, view: initial, mayRun }: Props) {
         </div>
         <Sheet
           id="tests"
-          title="Tests"
+          title={testList.tests}
           flush
           aside={
             <ButtonLink href={withQuery(paths.api.shutdownTestsCsv(site.id), { ...view })} download>
-              Tests as CSV
+              {testList.testsAsCSV}
             </ButtonLink>
           }
         >
           <div className="mb-3 flex flex-wrap items-end gap-x-5 gap-y-2">
             <Segmented
-              label="Which tests"
+              label={testList.whichTests}
               options={[
-                { value: 'in_force', label: 'In force and under way' },
-                { value: 'unsigned', label: 'Not signed' },
-                { value: 'superseded', label: 'Superseded' },
-                { value: 'all', label: `All ${list.tests.length}` },
+                { value: 'in_force', label: testList.inForceAndUnder },
+                { value: 'unsigned', label: testList.notSigned },
+                { value: 'superseded', label: testList.superseded },
+                { value: 'all', label: testList.allTests(list.tests.length) },
               ]}
               value={view.show}
               onChange={(show) => change({ show })}
             />
             {zones.length > 1 && (
               <Choice
-                label="Zone"
+                label={testList.zone}
                 value={view.zone}
                 options={[
-                  { value: '', label: 'All zones' },
+                  { value: '', label: testList.allZones },
                   ...zones.map((z) => ({ value: z.zone.name, label: z.zone.name })),
                 ]}
                 onChange={(zone) => change({ zone })}
               />
             )}
             <Field
-              label="Search"
+              label={testList.search}
               className="min-w-[200px]"
               type="search"
               value={view.q}
@@ -139,7 +137,7 @@ export function TestList({ list, view: initial, mayRun }: Props) {
             />
           </div>
           <Table
-            caption="Shutdown tests"
+            caption={testList.shutdownTests}
             columns={columns}
             rows={rows}
             rowKey={(t) => t.id}
@@ -150,7 +148,7 @@ export function TestList({ list, view: initial, mayRun }: Props) {
             empty={
               <Notice
                 kind="empty"
-                title={list.tests.length === 0 ? 'No test has been made here' : 'No test fits this choice'}
+                title={list.tests.length === 0 ? testList.noTestHasBeen : testList.noTestFitsThis}
               />
             }
           />
@@ -176,34 +174,33 @@ function ZoneSheet({ z, list, mayRun }: { z: ZoneStanding; list: ShutdownTestLis
     <Sheet
       id={`zone-${z.zone.id}`}
       title={z.zone.name}
-      aside={z.result ? <ResultTag result={z.result} /> : <Tag tone="outline">Not tested</Tag>}
+      aside={z.result ? <ResultTag result={z.result} /> : <Tag tone="outline">{testList.notTested}</Tag>}
     >
       <p className="text-ink-2">
         {z.initiator}
-        {z.initiatorPlace && `, ${z.initiatorPlace}`} · {counted(z.strings, 'string')}
+        {z.initiatorPlace && `, ${z.initiatorPlace}`} · {testList.countedStringsString(z.strings)}
       </p>
       {z.test && (
         <p className="mt-1">
-          Newest:{' '}
+          {testList.newest}
           <a className="text-petrol hover:underline" href={paths.shutdownTest(site.id, z.test.ref)}>
             <When at={z.test.at} list={list} />, {z.test.signedBy}
           </a>
         </p>
       )}
       {z.test && z.untested.length > 0 && (
-        <p className="mt-1 text-rust-ink">
-          Without a test: {z.untested.length > 8 ? counted(z.untested.length, 'string') : listed(z.untested)}
-        </p>
+        <p className="mt-1 text-rust-ink">{testList.withoutTest(z.untested.length, listed(z.untested))}</p>
       )}
       <div className="mt-4 flex flex-wrap gap-2">
         {z.draft ? (
           <>
             <ButtonLink weight="primary" href={paths.shutdownTest(site.id, z.draft.ref)}>
-              {mayRun ? 'Go on with the test' : 'Watch the test'}
+              {mayRun ? testList.goOnWithThe : testList.watchTheTest}
             </ButtonLink>
             <p className="self-center text-sm text-ink-2">
-              started <SiteTime at={z.draft.startedAt} now={at} timeZone={site.timeZone} /> by{' '}
-              {z.draft.startedBy}
+              {testList.started}
+              <SiteTime at={z.draft.startedAt} now={at} timeZone={site.timeZone} />
+              {testList.byStartedBy(z.draft.startedBy)}
             </p>
           </>
         ) : mayRun && z.strings > 0 ? (
@@ -213,18 +210,18 @@ function ZoneSheet({ z, list, mayRun }: { z: ZoneStanding; list: ShutdownTestLis
                 siteId={site.id}
                 zone={z.zone.id}
                 follows={z.test.ref}
-                label="Repeat for what is open"
+                label={testList.repeatForWhatIs}
               />
             )}
             <RepeatTest
               siteId={site.id}
               zone={z.zone.id}
-              label={z.test ? 'Start a new test of the whole zone' : 'Start the test'}
+              label={z.test ? testList.startANewTest : testList.startTheTest}
               weight={z.test ? 'plain' : 'primary'}
             />
           </>
         ) : null}
-        {!z.draft && !mayRun && <p className="text-ink-2">A manager or a technician starts a test.</p>}
+        {!z.draft && !mayRun && <p className="text-ink-2">{testList.aManagerOrA}</p>}
       </div>
     </Sheet>
   );

@@ -1,7 +1,7 @@
 import { WORST } from '../../domain/commissioning/shutdown-test';
-import { countAtStart, counted, listed } from '../../drawings/numbers';
-import { longDate } from '../../drawings/times';
+import { listed } from '../../drawings/numbers';
 import type { ShutdownTestList, TestListView, TestRow, ZoneStanding } from '../../schemas/api/shutdown-test';
+import { shutdownTestReportList } from '../../words/shutdown-test-report';
 
 export const LIST_DEFAULTS: TestListView = { q: '', zone: '', show: 'in_force', sort: 'at', order: 'down' };
 
@@ -41,8 +41,8 @@ const named = (zones: readonly ZoneStanding[]): string => listed(zones.map((z) =
 export function listFinding({ zones, site }: ShutdownTestList): ListFinding {
   if (zones.length === 0)
     return {
-      heading: 'There is no zone to test yet',
-      sentence: 'Name an initiator and its zone on the as-built first.',
+      heading: shutdownTestReportList.thereIsNoZone,
+      sentence: shutdownTestReportList.nameAnInitiatorAnd,
     };
   const failed = zones.filter((z) => z.result === 'failed');
   const never = zones.filter((z) => z.result === null);
@@ -50,25 +50,24 @@ export function listFinding({ zones, site }: ShutdownTestList): ListFinding {
   const partly = zones.filter((z) => z.result !== null && z.untested.length > 0);
   if (failed.length > 0)
     return {
-      heading: `${named(failed)} failed the shutdown test`,
-      sentence:
-        'Treat what failed as live, whatever the initiator says, find the cause, then repeat the test for the failed strings.',
+      heading: shutdownTestReportList.failedTheShutdownTest(named(failed)),
+      sentence: shutdownTestReportList.treatWhatFailedAs,
     };
   if (never.length > 0)
     return {
-      heading: `${named(never)} ${never.length === 1 ? 'has' : 'have'} not been tested`,
-      sentence: 'Until a rated instrument has shown it, nobody knows that the initiator shuts it down.',
+      heading: shutdownTestReportList.notBeenTested(named(never), never.length),
+      sentence: shutdownTestReportList.untilARatedInstrument,
     };
   if (open.length > 0)
     return {
-      heading: `${named(open)}: no rated instrument has shown the shutdown`,
-      sentence: 'Reports of units decide nothing. Read at the home runs within the time limit.',
+      heading: shutdownTestReportList.noRatedInstrumentHas(named(open)),
+      sentence: shutdownTestReportList.reportsOfUnitsDecide,
     };
   if (partly.length > 0) {
     const missing = partly.flatMap((z) => z.untested);
     return {
-      heading: `${countAtStart(missing.length)} ${missing.length === 1 ? 'string has' : 'strings have'} not been tested`,
-      sentence: `${missing.length <= 6 ? listed(missing) : counted(missing.length, 'string')} came to ${named(partly)} without a test.`,
+      heading: shutdownTestReportList.notBeenTested2(missing.length),
+      sentence: shutdownTestReportList.cameToWithoutTest(missing.length, listed(missing), named(partly)),
     };
   }
   const last = zones
@@ -78,8 +77,8 @@ export function listFinding({ zones, site }: ShutdownTestList): ListFinding {
   return {
     heading:
       zones.length === 1
-        ? `${named(zones)} passed its shutdown test`
-        : `All ${zones.length} zones passed their shutdown tests`,
-    sentence: `A result speaks of the day of the test${last ? `, last ${longDate(last, site.timeZone)}` : ''}. Shutdown is not isolation.`,
+        ? shutdownTestReportList.passedItsShutdownTest(named(zones))
+        : shutdownTestReportList.allZonesPassedTheir(zones.length),
+    sentence: shutdownTestReportList.aResultSpeaksOf(last, site.timeZone),
   };
 }

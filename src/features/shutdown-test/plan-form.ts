@@ -8,6 +8,7 @@ import {
 import { testPlan } from '../../schemas/api/shutdown-test';
 import { typedNumber } from '../../schemas/typed-number';
 import { roundsNeeded } from './round';
+import { shutdownTestPlanForm } from '../../words/shutdown-test';
 
 /** The plan as typed: every value is text, so that nothing typed is lost while it is wrong. */
 export const planForm = z.object({
@@ -61,7 +62,7 @@ export function readPlan(
 ): { plan: TestPlan | null; faults: PlanFaults } {
   const faults: PlanFaults = {};
   const ratedV = form.withInstrument
-    ? typedNumber(form.ratedV, 'Rated voltage', { min: 50, max: 2000, unit: 'V' })
+    ? typedNumber(form.ratedV, shutdownTestPlanForm.ratedVoltage, { min: 50, max: 2000, unit: 'V' })
     : null;
   if (ratedV?.fault) faults.ratedV = ratedV.fault;
   const read = testPlan.safeParse({
@@ -89,6 +90,6 @@ export function readPlan(
       faults[issue.path[0] === 'strings' ? 'strings' : field] ??= issue.message;
     }
   if (form.withInstrument && form.calibratedOn > today)
-    faults.calibratedOn = 'This day is still to come: enter the day of the newest calibration.';
+    faults.calibratedOn = shutdownTestPlanForm.thisDayIsStill;
   return { plan: read.success && Object.keys(faults).length === 0 ? read.data : null, faults };
 }

@@ -10,6 +10,7 @@ import type {
   Voltages,
 } from '../../domain/commissioning/shutdown-test-record';
 import type { TestLine } from '../../drawings/TestLines';
+import { shutdownTestRound } from '../../words/shutdown-test';
 
 /** One round of a test in figures, for the page that watches it and for the paper. Seconds, V. */
 
@@ -64,15 +65,15 @@ function pointsOf(conduct: StringConduct, fromS: number): Pick<StringNow, 'point
       points: [...rest.filter(([s]) => s < start), ...traced, ...rest.filter(([s]) => s > untilS)],
       source:
         trace.measuringPoint === 'input'
-          ? 'inverter’s input, which its capacitors hold up'
+          ? shutdownTestRound.invertersInputWhichIts
           : trace.measuringPoint === 'home_run'
-            ? 'at the home run'
-            : 'sum of what its units report',
+            ? shutdownTestRound.atTheHomeRun
+            : shutdownTestRound.sumOfWhatIts,
     };
-  if (conduct.sums.length > 0) return { points: conduct.sums, source: 'sum of what its units report' };
+  if (conduct.sums.length > 0) return { points: conduct.sums, source: shutdownTestRound.sumOfWhatIts };
   if (conduct.inputs.length > 0)
-    return { points: conduct.inputs, source: 'inverter’s input, which its capacitors hold up' };
-  return { points: [], source: 'nothing reported' };
+    return { points: conduct.inputs, source: shutdownTestRound.invertersInputWhichIts };
+  return { points: [], source: shutdownTestRound.nothingReported };
 }
 
 /** What is known of each string of a round, in the order of the as-built. */
@@ -89,7 +90,9 @@ export function stringsOfRound(
     .map((part) => {
       const conduct = seen?.strings.find((s) => s.string === part.id);
       const { points, source } =
-        conduct && fromS !== null ? pointsOf(conduct, fromS) : { points: [], source: 'nothing reported' };
+        conduct && fromS !== null
+          ? pointsOf(conduct, fromS)
+          : { points: [], source: shutdownTestRound.nothingReported };
       const limitV = homeRunLimit(part.homeRunLeavesArray);
       const known = points.filter((p): p is [number, number] => p[1] !== null && p[0] >= 0);
       let underFromS: number | null = null;
@@ -167,8 +170,8 @@ export function returnOf(seen: RoundEvidence | undefined): { back: number; held:
 
 /** What is shut down in a round, in words: the zone by its initiator, or one transmitter. */
 export function roundName(facts: TestFacts, transmitter: string | null): string {
-  if (transmitter === null) return `${facts.initiator.name}, whole zone`;
-  return `${facts.transmitters.find((t) => t.id === transmitter)?.name ?? 'transmitter'} off alone`;
+  if (transmitter === null) return shutdownTestRound.wholeZone(facts.initiator.name);
+  return shutdownTestRound.offAlone(facts.transmitters.find((t) => t.id === transmitter)?.name);
 }
 /** Strings that a round is to shut down: all by the initiator, else those that hear this transmitter alone. */
 export const stringsConcerned = (

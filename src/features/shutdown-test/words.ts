@@ -1,6 +1,7 @@
 import { openRound, type TestRecord } from '../../domain/commissioning/shutdown-test-record';
 import type { ShutdownTestPage } from '../../schemas/api/shutdown-test';
 import { roundName } from './round';
+import { shutdownTestWords } from '../../words/shutdown-test';
 
 export interface StepWords {
   heading: string;
@@ -17,71 +18,76 @@ export function stepWords(
   const zone = facts.zone.name;
   if (page.state === 'ended')
     return {
-      heading: `The test of ${zone} was ended without a signature`,
-      sentence: 'It counts as no test. What was written stays readable.',
+      heading: shutdownTestWords.theTestOfWas(zone),
+      sentence: shutdownTestWords.itCountsAsNo,
     };
   if (step === 'plan')
     return record.plan === null
       ? {
-          heading: `Test of ${zone}: who is there, and what with?`,
+          heading: shutdownTestWords.testOfWhoIs(zone),
           sentence: page.follows
-            ? 'This test repeats what the one before left open; people, instrument and strings are taken from it.'
-            : `It shows whether ${facts.initiator.name} brings the home runs down in time.`,
+            ? shutdownTestWords.thisTestRepeatsWhat
+            : shutdownTestWords.itShowsWhetherBrings(facts.initiator.name),
         }
       : {
-          heading: `Test of ${zone}: ${record.plan.operator} operates ${facts.initiator.name}`,
-          sentence: 'Change what is wrong; rounds that have begun stay.',
+          heading: shutdownTestWords.testOfOperates(zone, record.plan.operator, facts.initiator.name),
+          sentence: shutdownTestWords.changeWhatIsWrong,
         };
   if (step === 'caution')
     return {
       heading: record.caution
-        ? `The caution was accepted by ${record.caution.name}`
-        : 'Read the caution before anybody measures',
-      sentence: 'Accepted by name and time; it stays with the test.',
+        ? shutdownTestWords.theCautionWasAccepted(record.caution.name)
+        : shutdownTestWords.readTheCautionBefore,
+      sentence: shutdownTestWords.acceptedByNameAnd,
     };
   if (step === 'sign') {
     if (record.rounds.every((r) => r.watchStarted === null))
-      return { heading: 'No round has been watched yet', sentence: 'There is no verdict to sign.' };
+      return { heading: shutdownTestWords.noRoundHasBeen, sentence: shutdownTestWords.thereIsNoVerdict };
     return {
       heading: verdict.headline,
       sentence:
         verdict.result === 'failed'
-          ? 'Sign it all the same: a failed test is a record. Then find the cause and repeat the test for what failed.'
+          ? shutdownTestWords.signItAllThe
           : verdict.result === 'passed'
-            ? 'Only the instrument decides; reports of units stand beside it.'
-            : 'It can be signed as it is; what is missing is listed below.',
+            ? shutdownTestWords.onlyTheInstrumentDecides
+            : shutdownTestWords.itCanBeSigned,
     };
   }
   const round = record.rounds[step];
   const name = round ? roundName(facts, round.transmitter) : '';
   if (!round?.watchStarted)
     return {
-      heading: `Round ${step + 1}: ${name}`,
-      sentence: 'Start watching first; then a person operates it by hand.',
+      heading: shutdownTestWords.roundStepName(step, name),
+      sentence: shutdownTestWords.startWatchingFirstThen,
     };
   if (round.ended)
     return {
-      heading: `Round ${step + 1} is over: ${name}`,
-      sentence: 'Go on with the next round, repeat this one, or look at the verdict.',
+      heading: shutdownTestWords.roundIsOver(step, name),
+      sentence: shutdownTestWords.goOnWithThe,
     };
   const live = verdict.treatAsLive.map((s) => s.name);
   if (live.length > 0 && openRound(record) === step)
     return {
-      heading: `${live.join(', ')} did not shut down`,
-      sentence: 'Treat as live. Release, end the round, and find the cause before anybody works there.',
+      heading: shutdownTestWords.didNotShutDown(live.join(', ')),
+      sentence: shutdownTestWords.treatAsLiveRelease,
     };
   if (!round.operated)
     return {
-      heading: `Watching ${zone}: waiting for a person to operate ${round.transmitter === null ? facts.initiator.name : name.replace(' off alone', '')}`,
-      sentence: 'Read + to − of each home run first: only a string that was live can be shown dead.',
+      heading: shutdownTestWords.watchingWaitingForPerson(
+        zone,
+        round.transmitter,
+        facts.initiator.name,
+        name.replace(' off alone', ''),
+      ),
+      sentence: shutdownTestWords.readToOfEach,
     };
   if (!round.released)
     return {
-      heading: `${round.transmitter === null ? facts.initiator.name : name} was operated: read the home runs`,
-      sentence: `+ to −, + to earth and − to earth at the inverter’s end, within ${verdict.limits.afterS} s.`,
+      heading: shutdownTestWords.wasOperatedReadThe(round.transmitter, facts.initiator.name, name),
+      sentence: shutdownTestWords.toToEarthAnd(verdict.limits.afterS),
     };
   return {
-    heading: `Released: watch ${zone} come back`,
-    sentence: 'Units that do not come back are stuck; the verdict names them.',
+    heading: shutdownTestWords.releasedWatchComeBack(zone),
+    sentence: shutdownTestWords.unitsThatDoNot,
   };
 }

@@ -6,12 +6,13 @@ import { fullTime } from '../../drawings/times';
 import type { CommandNow } from '../../schemas/api/now';
 import { paths } from '../../schemas/paths';
 import type { Held } from './groups';
+import { heldSites } from '../../words/shutdown';
 
 const IN_FORCE: Record<CommandNow['inForce'], string> = {
-  initiator: 'Initiator open',
-  keep_alive_lost: 'Keep-alive gone',
-  power_lost: 'Power gone',
-  released: 'Released',
+  initiator: heldSites.initiatorOpen,
+  keep_alive_lost: heldSites.keepAliveGone,
+  power_lost: heldSites.powerGone,
+  released: heldSites.released,
 };
 
 /** Confirmed: a unit that says it is in shutdown and is not stuck there against a release. */
@@ -23,7 +24,7 @@ export function HeldSites({ caption, held, now }: { caption: string; held: reado
   const columns: Column<Held>[] = [
     {
       key: 'site',
-      label: 'Site',
+      label: heldSites.site,
       cell: ({ site }) => (
         <>
           <a
@@ -36,19 +37,20 @@ export function HeldSites({ caption, held, now }: { caption: string; held: reado
             href={paths.shutdownTests(site.id)}
             className="target flex items-center text-sm text-petrol hover:underline"
           >
-            Shutdown tests<span className="sr-only"> of {site.name}</span>
+            {heldSites.shutdownTests}
+            <span className="sr-only">{heldSites.ofSite(site.name)}</span>
           </a>
         </>
       ),
     },
     {
       key: 'commands',
-      label: 'In force',
+      label: heldSites.inForce,
       cell: ({ site, commands }) => (
         <ul className="space-y-1">
           {commands.map((c) => (
             <li key={`${c.whereKind} ${c.where}`}>
-              {c.where}: {IN_FORCE[c.inForce].toLowerCase()} since{' '}
+              {heldSites.whereInForceSince(c.where, IN_FORCE[c.inForce])}
               <time dateTime={c.since} title={fullTime(c.since, site.timeZone)}>
                 {siteClock(c.since, now, site.timeZone, readerZone)}
               </time>
@@ -60,7 +62,7 @@ export function HeldSites({ caption, held, now }: { caption: string; held: reado
     },
     {
       key: 'units',
-      label: 'Units',
+      label: heldSites.units,
       from: 'sm',
       cell: ({ site }) => (
         <MixBar id={`held-${site.id}-${caption.length}`} counts={site.counts} width={150} />
@@ -68,9 +70,9 @@ export function HeldSites({ caption, held, now }: { caption: string; held: reado
     },
     {
       key: 'confirmed',
-      label: 'Say they are in shutdown',
+      label: heldSites.sayTheyAreIn,
       numeric: true,
-      cell: (line) => `${number(confirmed(line))} of ${number(line.site.counts.units)}`,
+      cell: (line) => heldSites.lineOfUnits(confirmed(line), line.site.counts.units),
     },
   ];
   return <Table caption={caption} columns={columns} rows={held} rowKey={({ site }) => site.id} />;

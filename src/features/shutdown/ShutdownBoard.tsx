@@ -11,7 +11,6 @@ import { Segmented } from '../../components/ui/Segmented';
 import { Sheet } from '../../components/ui/Sheet';
 import { useNow } from '../../components/ui/Time';
 import { useReaderZone } from '../../components/ui/reader-zone';
-import { counted } from '../../drawings/numbers';
 import { withQuery } from '../../lib/api';
 import { useLive } from '../../lib/live-hook';
 import { queryClient } from '../../lib/query-client';
@@ -24,22 +23,23 @@ import { UnitsTable } from './UnitsTable';
 import { shutdownFinding } from './finding';
 import { heldSites, shutdownGroups, type Group } from './groups';
 import { changedShutdown, shutdownKey, shutdownQuery, withAcknowledgement } from './query';
+import { shutdownBoard } from '../../words/shutdown';
 
 export const SHUTDOWN_DEFAULTS: ShutdownView = { q: '', show: 'all' };
 
 const SHOWS = [
-  { value: 'all', label: 'All' },
-  { value: 'not_shutting_down', label: 'Not shutting down' },
-  { value: 'stuck', label: 'Stuck' },
-  { value: 'unconfirmed', label: 'Unconfirmed' },
-  { value: 'silent', label: 'Silent' },
+  { value: 'all', label: shutdownBoard.all },
+  { value: 'not_shutting_down', label: shutdownBoard.notShuttingDown },
+  { value: 'stuck', label: shutdownBoard.stuck },
+  { value: 'unconfirmed', label: shutdownBoard.unconfirmed },
+  { value: 'silent', label: shutdownBoard.silent },
 ] as const;
 
 const TITLE: Record<CauseNow['verdict'], string> = {
-  not_shutting_down: 'Kept passing after a command',
-  stuck: 'Stuck in shutdown after a release',
-  unconfirmed: 'Shutdown commanded, not confirmed',
-  silent: "Silent: whether they would shut down can't be confirmed",
+  not_shutting_down: shutdownBoard.keptPassingAfterA,
+  stuck: shutdownBoard.stuckInShutdownAfter,
+  unconfirmed: shutdownBoard.shutdownCommandedNotConfirmed,
+  silent: shutdownBoard.silentWhetherTheyWould,
 };
 
 interface Props {
@@ -72,11 +72,10 @@ export function ShutdownBoard({ initial, view: initialView, timeZone }: Props) {
           {TITLE[verdict]}
         </h2>
         <p className="text-sm text-ink-2">
-          {counted(
+          {shutdownBoard.oldestFirst(
             causes.reduce((n, c) => n + c.units.length, 0),
-            'unit',
+            causes.length,
           )}
-          , {counted(causes.length, 'cause')} · oldest first
         </p>
       </div>
       <div className="space-y-4">
@@ -103,20 +102,16 @@ export function ShutdownBoard({ initial, view: initialView, timeZone }: Props) {
     <>
       <LiveHeading finding={finding} status={status} timeZone={readerZone} />
       <div className="mb-6">
-        <Caution strong="Shutdown is not isolation.">
-          Each module and its leads to its unit stay at module voltage in light. Wakeline reads what units
-          report and never switches. Isolate, lock out, prove dead with a rated meter. Licensed or qualified
-          people; local code comes first.
-        </Caution>
+        <Caution strong={shutdownBoard.shutdownIsNotIsolation}>{shutdownBoard.eachModuleAndIts}</Caution>
       </div>
       <NotRead
         error={error}
-        title="The state of shutdown could not be read anew"
+        title={shutdownBoard.theStateOfShutdown}
         kind="failed"
         onRetry={() => refetch()}
         className="mb-6"
       >
-        What is shown may be old.
+        {shutdownBoard.whatIsShownMay}
       </NotRead>
       <form
         action={paths.shutdown()}
@@ -125,13 +120,13 @@ export function ShutdownBoard({ initial, view: initialView, timeZone }: Props) {
       >
         <SearchInput
           name="q"
-          label="Filter by site, part, string or serial"
+          label={shutdownBoard.filterBySitePart}
           value={view.q}
           onChange={(typed) => change({ q: typed }, 'typed')}
           className="sm:w-[290px]"
         />
         <Segmented
-          label="Which units"
+          label={shutdownBoard.whichUnits}
           options={SHOWS}
           value={view.show}
           onChange={(show) => change({ show })}
@@ -146,29 +141,35 @@ export function ShutdownBoard({ initial, view: initialView, timeZone }: Props) {
             <div className="mb-8">
               <Notice
                 kind="empty"
-                title="Nothing matches"
-                action={<Button onClick={() => change(SHUTDOWN_DEFAULTS)}>Show all</Button>}
+                title={shutdownBoard.nothingMatches}
+                action={<Button onClick={() => change(SHUTDOWN_DEFAULTS)}>{shutdownBoard.showAll}</Button>}
               >
-                Another word or filter may.
+                {shutdownBoard.anotherWordOrFilter}
               </Notice>
             </div>
           )}
       {held.lost.length > 0 && (
-        <Sheet id="lost" className="mb-8" flush title="Keep-alive or power gone" aside="longest first">
-          <HeldSites caption="Sites whose keep-alive or power went" held={held.lost} now={clock} />
+        <Sheet
+          id="lost"
+          className="mb-8"
+          flush
+          title={shutdownBoard.keepAliveOrPower}
+          aside={shutdownBoard.longestFirst}
+        >
+          <HeldSites caption={shutdownBoard.sitesWhoseKeepAlive} held={held.lost} now={clock} />
         </Sheet>
       )}
       <Sheet
         id="purpose"
         flush
-        title="In shutdown on purpose"
-        aside={held.purpose.length > 0 ? 'longest first' : null}
+        title={shutdownBoard.inShutdownOnPurpose}
+        aside={held.purpose.length > 0 ? shutdownBoard.longestFirst : null}
       >
         {held.purpose.length > 0 ? (
-          <HeldSites caption="Sites in shutdown on purpose" held={held.purpose} now={clock} />
+          <HeldSites caption={shutdownBoard.sitesInShutdownOn} held={held.purpose} now={clock} />
         ) : (
-          <Notice kind="empty" title="No initiator is open">
-            A site whose initiator a person opens is listed here and not among the faults.
+          <Notice kind="empty" title={shutdownBoard.noInitiatorIsOpen}>
+            {shutdownBoard.aSiteWhoseInitiator}
           </Notice>
         )}
       </Sheet>

@@ -3,6 +3,7 @@ import { siteClock, useReaderZone } from '../../components/ui/reader-zone';
 import { fullTime } from '../../drawings/times';
 import type { CauseNow } from '../../schemas/api/now';
 import { paths } from '../../schemas/paths';
+import { unitsTable } from '../../words/shutdown';
 
 type Unit = CauseNow['units'][number];
 /** So many are listed at once; more open on demand. */
@@ -19,7 +20,7 @@ export function UnitsTable({ cause, timeZone, now }: { cause: CauseNow; timeZone
   const columns: Column<Unit>[] = [
     {
       key: 'string',
-      label: 'String',
+      label: unitsTable.string,
       cell: (unit) => (
         <>
           <a
@@ -32,11 +33,16 @@ export function UnitsTable({ cause, timeZone, now }: { cause: CauseNow; timeZone
         </>
       ),
     },
-    { key: 'position', label: 'Position', numeric: true, cell: (unit) => unit.position ?? 'unknown' },
-    { key: 'serial', label: 'Serial', from: 'sm', cell: (unit) => unit.serial ?? '–' },
+    {
+      key: 'position',
+      label: unitsTable.position,
+      numeric: true,
+      cell: (unit) => unit.position ?? 'unknown',
+    },
+    { key: 'serial', label: unitsTable.serial, from: 'sm', cell: (unit) => unit.serial ?? '–' },
     {
       key: 'since',
-      label: 'Since',
+      label: unitsTable.since,
       numeric: true,
       cell: (unit) => (
         <time dateTime={unit.since} title={fullTime(unit.since, timeZone)}>
@@ -47,7 +53,7 @@ export function UnitsTable({ cause, timeZone, now }: { cause: CauseNow; timeZone
   ];
   const table = (rows: readonly Unit[]) => (
     <Table
-      caption={`Units: ${cause.headline}`}
+      caption={unitsTable.unitsCause(cause.headline)}
       columns={columns}
       rows={rows}
       rowKey={(unit) => `${unit.stringId} ${unit.position ?? '-'}`}
@@ -58,7 +64,7 @@ export function UnitsTable({ cause, timeZone, now }: { cause: CauseNow; timeZone
   return (
     <details>
       <summary className="target inline-flex cursor-pointer items-center font-medium text-petrol hover:underline">
-        All {units.length} by position
+        {unitsTable.allByPosition(units.length)}
       </summary>
       {table(units)}
     </details>

@@ -1,5 +1,6 @@
 import { partInWords } from '../../components/causes/words';
 import type { ShutdownRow } from './groups';
+import { shutdownColumns } from '../../words/shutdown';
 
 /** The Shutdown page as a download: one row a unit, its cause beside it. */
 export const SHUTDOWN_COLUMNS: { header: string; value: (row: ShutdownRow) => string | number | null }[] = [
@@ -8,14 +9,17 @@ export const SHUTDOWN_COLUMNS: { header: string; value: (row: ShutdownRow) => st
   { header: 'string', value: ({ unit }) => unit?.stringName ?? null },
   { header: 'position', value: ({ unit }) => unit?.position ?? null },
   { header: 'serial', value: ({ unit }) => unit?.serial ?? null },
-  { header: 'since (UTC)', value: ({ cause, unit }) => unit?.since ?? cause.since },
-  { header: 'shared part', value: ({ cause }) => (cause.sharedPart ? partInWords(cause.sharedPart) : null) },
+  { header: shutdownColumns.sinceUTC, value: ({ cause, unit }) => unit?.since ?? cause.since },
+  {
+    header: shutdownColumns.sharedPart,
+    value: ({ cause }) => (cause.sharedPart ? partInWords(cause.sharedPart) : null),
+  },
   { header: 'cause', value: ({ cause }) => cause.headline },
   { header: 'evidence', value: ({ cause }) => cause.evidence },
-  { header: 'could also be', value: ({ cause }) => cause.alternatives.join('; ') },
-  { header: 'confidence (%)', value: ({ cause }) => Math.round(cause.confidence * 100) },
+  { header: shutdownColumns.couldAlsoBe, value: ({ cause }) => cause.alternatives.join('; ') },
+  { header: shutdownColumns.confidence, value: ({ cause }) => Math.round(cause.confidence * 100) },
   {
-    header: 'loss (Wh/day)',
+    header: shutdownColumns.lossWhDay,
     value: ({ cause }) => (cause.lossWhPerDay === null ? null : Math.round(cause.lossWhPerDay)),
   },
 ];

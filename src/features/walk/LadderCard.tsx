@@ -1,12 +1,13 @@
 import { Caution } from '../../components/ui/Caution';
 import { Button, ButtonLink } from '../../components/ui/Button';
-import { counted, listed, number } from '../../drawings/numbers';
+import { listed, number } from '../../drawings/numbers';
 import { clock, longDate, zoneName } from '../../drawings/times';
 import { withQuery } from '../../lib/api';
 import type { WalkPage, WalkView } from '../../schemas/api/walk';
 import { paths } from '../../schemas/paths';
 import { chosenStops, readingsOf, sparesOf, stopsOfPage } from './stops';
 import { STOP_WORDS, walkHeading } from './words';
+import { ladderCard } from '../../words/walk';
 
 /** Stops and strings that a card of one screen carries; more need two trips. */
 const STOPS_MAX = 6;
@@ -18,7 +19,7 @@ const joint = (halves: readonly [string | null, string | null]): string =>
     ? halves[0] === halves[1]
       ? `2 × ${halves[0]}`
       : `${halves[0]} + ${halves[1]}`
-    : 'types not entered: read the marks on both halves';
+    : ladderCard.typesNotEnteredRead;
 
 /** One screen for the pocket: where, what to bring, what the meter should read, what to beware of. */
 export function LadderCard({ page, view }: { page: WalkPage; view: WalkView }) {
@@ -42,13 +43,10 @@ export function LadderCard({ page, view }: { page: WalkPage; view: WalkView }) {
         {site.place && `, ${site.place}`}
       </p>
       <div className="my-2 [&_aside]:!px-3 [&_aside]:!py-2 [&_aside]:!text-[13px] [&_aside]:!leading-[17px]">
-        <Caution strong="Shutdown is not isolation.">
-          Modules and their leads stay at module voltage in light. Never open a connector under load. Isolate,
-          lock out, prove dead with a rated meter; fall protection; qualified people, local code first.
-        </Caution>
+        <Caution strong={ladderCard.shutdownIsNotIsolation}>{ladderCard.modulesAndTheirLeads}</Caution>
       </div>
       <section className="border-t-2 border-ink pt-1.5">
-        <h2 className="mb-0.5 text-[13px]">Where</h2>
+        <h2 className="mb-0.5 text-[13px]">{ladderCard.where}</h2>
         <ol>
           {shown.map((s, i) => (
             <li key={s.key} className="flex justify-between gap-3 border-b border-rule-faint py-1">
@@ -56,7 +54,7 @@ export function LadderCard({ page, view }: { page: WalkPage; view: WalkView }) {
                 <strong className="font-semibold">
                   {i + 1}. {s.key}
                 </strong>{' '}
-                {s.roofPlace || 'place not recorded'}
+                {s.roofPlace || ladderCard.placeNotRecorded}
                 {s.serial && <span className="whitespace-nowrap text-ink-2"> · {s.serial}</span>}
               </span>
               <span className="flex-none text-right font-medium">{STOP_WORDS[s.kind]}</span>
@@ -65,51 +63,57 @@ export function LadderCard({ page, view }: { page: WalkPage; view: WalkView }) {
         </ol>
         {stops.length > shown.length && (
           <p className="py-1 text-ink-2">
-            and {stops.length - shown.length} more:{' '}
-            {listed(stops.slice(STOPS_MAX, STOPS_MAX + 8).map((s) => s.key))}
-            {stops.length > STOPS_MAX + 8 && ' …'}. Leave stops out for a card of their own.
+            {ladderCard.andMore(
+              stops.length,
+              shown.length,
+              listed(stops.slice(STOPS_MAX, STOPS_MAX + 8).map((s) => s.key)),
+            )}
+            {stops.length > STOPS_MAX + 8 && ' …'}
+            {ladderCard.leaveStopsOutFor}
           </p>
         )}
-        {stops.length === 0 && <p className="py-1 text-ink-2">No stop is chosen.</p>}
+        {stops.length === 0 && <p className="py-1 text-ink-2">{ladderCard.noStopIsChosen}</p>}
       </section>
       <section className="mt-2 border-t-2 border-ink pt-1.5">
-        <h2 className="mb-0.5 text-[13px]">Bring</h2>
+        <h2 className="mb-0.5 text-[13px]">{ladderCard.bring}</h2>
         <ul className="list-disc pl-4">
           {spares.units.map((u) => (
             <li key={u.type}>
-              {counted(u.count, 'spare unit')}, {u.type}
+              {ladderCard.countedCountSpareUnit(u.count)}, {u.type}
             </li>
           ))}
           {spares.connectors.map((c) => (
             <li key={`${c.where} ${c.halves.join()}`}>
-              Connector halves, {c.where}: {joint(c.halves)}
+              {ladderCard.connectorHalves(c.where, joint(c.halves))}
             </li>
           ))}
           <li>
-            Meter rated for{' '}
+            {ladderCard.meterRatedFor}
             {readings.length > 0
-              ? `${number(Math.ceil(Math.max(...readings.map((r) => r.roof.readings.passing.high)) / 50) * 50)} V DC or more`
-              : 'the string’s open-circuit voltage'}
-            , ladder, fall protection, lock
+              ? ladderCard.dcOrMore(
+                  Math.ceil(Math.max(...readings.map((r) => r.roof.readings.passing.high)) / 50),
+                )
+              : ladderCard.theStringsOpenCircuit}
+            {ladderCard.ladderFallProtectionLock}
           </li>
         </ul>
       </section>
       <section className="mt-2 border-t-2 border-ink pt-1.5">
-        <h2 className="mb-0.5 text-[13px]">The meter, + to −, string separated, {page.light}</h2>
+        <h2 className="mb-0.5 text-[13px]">{ladderCard.theMeterToString(page.light)}</h2>
         <table className="w-full border-collapse text-left">
           <thead>
             <tr className="border-b border-rule text-xs text-ink-2">
               <th scope="col" className="py-0.5 font-medium">
-                String
+                {ladderCard.string}
               </th>
               <th scope="col" className="py-0.5 text-right font-medium">
-                in shutdown
+                {ladderCard.inShutdown}
               </th>
               <th scope="col" className="py-0.5 text-right font-medium">
-                passing
+                {ladderCard.passing}
               </th>
               <th scope="col" className="py-0.5 text-right font-medium">
-                as it is now
+                {ladderCard.asItIsNow}
               </th>
             </tr>
           </thead>
@@ -123,7 +127,7 @@ export function LadderCard({ page, view }: { page: WalkPage; view: WalkView }) {
                 <td className="py-1 text-right">
                   {voltsFrom(r.passing.volts)} V
                   <span className="block text-xs text-ink-2">
-                    {voltsFrom(r.passing.low)} to {voltsFrom(r.passing.high)}
+                    {ladderCard.lowToHigh(voltsFrom(r.passing.low), voltsFrom(r.passing.high))}
                   </span>
                 </td>
                 <td className="py-1 text-right">{voltsFrom(r.now.volts)} V</td>
@@ -132,17 +136,17 @@ export function LadderCard({ page, view }: { page: WalkPage; view: WalkView }) {
           </tbody>
         </table>
         <p className="mt-1 text-xs text-ink-2">
-          {readings.length > STRINGS_MAX && `And ${readings.length - STRINGS_MAX} more strings. `}
-          According to the types entered. At night and under snow 0 V: that proves nothing.
+          {readings.length > STRINGS_MAX && ladderCard.andMoreStrings(readings.length, STRINGS_MAX)}
+          {ladderCard.accordingToTheTypes}
         </p>
       </section>
       <p className="mt-2 border-t-2 border-ink pt-1.5">
-        <strong className="font-semibold">Shutdown switch:</strong>{' '}
-        {site.shutdownSwitchPlace || 'place not recorded'}
+        <strong className="font-semibold">{ladderCard.shutdownSwitch}</strong>{' '}
+        {site.shutdownSwitchPlace || ladderCard.placeNotRecorded}
         {site.contactName && (
           <>
             <br />
-            <strong className="font-semibold">On site:</strong> {site.contactName}
+            <strong className="font-semibold">{ladderCard.onSite}</strong> {site.contactName}
             {site.contactPhone && (
               <>
                 ,{' '}
@@ -156,10 +160,10 @@ export function LadderCard({ page, view }: { page: WalkPage; view: WalkView }) {
       </p>
       <div className="no-print mt-2 flex gap-2">
         <ButtonLink href={back} className="flex-1">
-          Back to the walk
+          {ladderCard.backToTheWalk}
         </ButtonLink>
         <Button className="flex-1" onClick={() => window.print()}>
-          Print
+          {ladderCard.print}
         </Button>
       </div>
     </article>

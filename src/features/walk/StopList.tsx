@@ -3,27 +3,21 @@ import { Notice } from '../../components/ui/Notice';
 import { Sheet } from '../../components/ui/Sheet';
 import { StateTag } from '../../components/states/StateTag';
 import { Tag } from '../../components/ui/Tag';
-import { volts } from '../../drawings/numbers';
-import { clock, clockOrDate } from '../../drawings/times';
 import type { SlotNow } from '../../schemas/api/now';
 import type { WalkPage } from '../../schemas/api/walk';
 import { paths } from '../../schemas/paths';
 import type { Stop } from './stops';
 import type { Tick } from './ticks';
 import { STOP_TASKS, STOP_WORDS } from './words';
+import { stopList } from '../../words/walk';
 
 const slotOf = (page: WalkPage, stringName: string, position: number | null): SlotNow | undefined =>
   page.strings.find((s) => s.name === stringName)?.slots.find((slot) => slot.position === position);
 
 /** What the unit says at this moment: the reason to look at the phone again after the work. */
 function Reads({ slot, page }: { slot: SlotNow | undefined; page: WalkPage }) {
-  if (!slot?.seen) return <>no report yet</>;
-  return (
-    <>
-      {slot.voltage === null ? 'reported' : volts(slot.voltage)} at{' '}
-      {clockOrDate(slot.seen, page.at, page.site.timeZone)}
-    </>
-  );
+  if (!slot?.seen) return <>{stopList.noReportYet}</>;
+  return <>{stopList.voltageAtSeen(slot.voltage, slot.seen, page.at, page.site.timeZone)}</>;
 }
 
 interface RowProps {
@@ -49,7 +43,7 @@ function Row({ page, stop, number, tick, onTick, onLeaveOut }: RowProps) {
               checked={tick !== undefined}
               onChange={(e) => onTick(e.target.checked)}
               className="h-6 w-6 accent-petrol"
-              aria-label={`${stop.key} is done`}
+              aria-label={stopList.isDone(stop.key)}
             />
           </span>
           <span className="min-w-0">
@@ -57,7 +51,7 @@ function Row({ page, stop, number, tick, onTick, onLeaveOut }: RowProps) {
               {number}. {stop.key}
             </span>
             <span className="block text-ink-2">
-              {stop.roofPlace || 'place on the roof not recorded'}
+              {stop.roofPlace || stopList.placeOnTheRoof}
               {stop.serial && (
                 <>
                   {' '}
@@ -68,7 +62,7 @@ function Row({ page, stop, number, tick, onTick, onLeaveOut }: RowProps) {
           </span>
         </label>
         {stop.kind === 'unplaced' ? (
-          <Tag tone="outline">no unit</Tag>
+          <Tag tone="outline">{stopList.noUnit}</Tag>
         ) : stop.position === null ? (
           <Tag tone={stop.kind === 'not_shutting_down' ? 'crimson' : 'rust'} shape="▼">
             {STOP_WORDS[stop.kind]}
@@ -81,7 +75,7 @@ function Row({ page, stop, number, tick, onTick, onLeaveOut }: RowProps) {
         <p className="min-w-0 flex-1 text-sm text-ink-2">
           {tick ? (
             <>
-              Ticked {clock(tick.at, timeZone)}; still {STOP_WORDS[stop.kind]} by its last word:{' '}
+              {stopList.tickedStillByIts(tick.at, timeZone, STOP_WORDS[stop.kind])}
               <Reads slot={slot} page={page} />.
             </>
           ) : null}
@@ -98,9 +92,9 @@ function Row({ page, stop, number, tick, onTick, onLeaveOut }: RowProps) {
               type="button"
               onClick={onLeaveOut}
               className="target px-2 text-sm text-ink-2 hover:text-ink hover:underline"
-              aria-label={`Leave out ${stop.key}`}
+              aria-label={stopList.leaveOut2(stop.key)}
             >
-              Leave out
+              {stopList.leaveOut}
             </button>
           )}
         </span>
@@ -128,13 +122,16 @@ export function StopList({ page, stops, leftOut, ticks, onTick, onLeaveOut, onPu
     <>
       <Sheet
         id="stops"
-        title="Stops"
+        title={stopList.stops}
         aside={
           stops.length > 0 && (
             <>
-              {stops.filter((s) => ticks.some((t) => t.key === s.key)).length} of {stops.length} ticked ·{' '}
+              {stopList.ofTicked(
+                stops.filter((s) => ticks.some((t) => t.key === s.key)).length,
+                stops.length,
+              )}
               <a href={paths.api.walkCsv(page.site.id)} download className="text-petrol underline">
-                all as CSV
+                {stopList.allAsCSV}
               </a>
             </>
           )
@@ -143,11 +140,11 @@ export function StopList({ page, stops, leftOut, ticks, onTick, onLeaveOut, onPu
         {stops.length === 0 ? (
           <Notice
             kind={page.rollCalled ? 'done' : 'empty'}
-            title={page.rollCalled ? 'No stop is left on this walk' : 'The roll call has not been started'}
+            title={page.rollCalled ? stopList.noStopIsLeft : stopList.theRollCallHas}
             action={
               page.rollCalled ? undefined : (
                 <a className="text-petrol hover:underline" href={paths.rollCall(page.site.id)}>
-                  To the roll call
+                  {stopList.toTheRollCall}
                 </a>
               )
             }
@@ -181,7 +178,7 @@ export function StopList({ page, stops, leftOut, ticks, onTick, onLeaveOut, onPu
         )}
         {leftOut.length > 0 && (
           <div className="no-print mt-4 border-t border-rule-faint pt-3">
-            <p className="text-sm text-ink-2">Left out of this walk:</p>
+            <p className="text-sm text-ink-2">{stopList.leftOutOfThis}</p>
             <div className="mt-1.5 flex flex-wrap gap-1.5">
               {leftOut.slice(0, 24).map((s) => (
                 <Button key={s.key} className="!px-2.5 !text-sm" onClick={() => onPutBack([s])}>
@@ -189,14 +186,14 @@ export function StopList({ page, stops, leftOut, ticks, onTick, onLeaveOut, onPu
                 </Button>
               ))}
               <Button className="!px-2.5 !text-sm" onClick={() => onPutBack(leftOut)}>
-                Put all {leftOut.length} back
+                {stopList.putAllBack(leftOut.length)}
               </Button>
             </div>
           </div>
         )}
       </Sheet>
       {mended.length > 0 && (
-        <Sheet id="mended" title="Ticked, and in order again">
+        <Sheet id="mended" title={stopList.tickedAndInOrder}>
           <ul>
             {mended.map((t) => {
               const [, name, position] = /^(.*)-(\d+)$/.exec(t.key) ?? [];
@@ -209,7 +206,7 @@ export function StopList({ page, stops, leftOut, ticks, onTick, onLeaveOut, onPu
                   <span>
                     <span className="font-semibold">{t.key}</span>{' '}
                     <span className="text-ink-2">
-                      was {STOP_WORDS[t.kind]}, ticked {clock(t.at, page.site.timeZone)}; now{' '}
+                      {stopList.wasTickedNow(STOP_WORDS[t.kind], t.at, page.site.timeZone)}
                       <Reads slot={slot} page={page} />
                     </span>
                   </span>
@@ -220,7 +217,7 @@ export function StopList({ page, stops, leftOut, ticks, onTick, onLeaveOut, onPu
                       className="target px-2 text-sm text-ink-2 hover:underline"
                       onClick={() => onTick(t, false)}
                     >
-                      Forget
+                      {stopList.forget}
                     </button>
                   </span>
                 </li>

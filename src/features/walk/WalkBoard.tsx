@@ -6,7 +6,7 @@ import { NotRead } from '../../components/ui/NotRead';
 import { Notice } from '../../components/ui/Notice';
 import { Sheet } from '../../components/ui/Sheet';
 import { Walk } from '../../drawings/Walk';
-import { counted, number } from '../../drawings/numbers';
+import { counted } from '../../drawings/numbers';
 import { withQuery } from '../../lib/api';
 import { useLive } from '../../lib/live-hook';
 import { queryClient } from '../../lib/query-client';
@@ -19,6 +19,7 @@ import { asBuiltChanged, patchWalk, walkKey, walkQuery } from './query';
 import { chosenStops, drawnWalk, sparesOf, stopsOfPage, stopsParam, type Stop } from './stops';
 import { useTicks } from './ticks';
 import { walkHeading, walkSentence } from './words';
+import { walkBoard } from '../../words/walk';
 
 const DEFAULTS: WalkView = { stops: '', view: 'walk', string: '' };
 
@@ -61,29 +62,24 @@ export function WalkBoard({ initial, view: asked }: Props) {
     <>
       <LiveHeading
         crumbs={[
-          { label: 'Commissioning', href: paths.commissioning() },
+          { label: walkBoard.commissioning, href: paths.commissioning() },
           { label: page.site.name, href: paths.commissioningSite(id) },
         ]}
         finding={{ heading: walkHeading(page, stops), sentence: walkSentence(page, stops) }}
         status={status}
         timeZone={timeZone}
       />
-      <NotRead
-        error={error}
-        title="The walk could not be read again"
-        onRetry={() => refetch()}
-        className="mb-5"
-      >
-        Where the stops are still holds.
+      <NotRead error={error} title={walkBoard.theWalkCouldNot} onRetry={() => refetch()} className="mb-5">
+        {walkBoard.whereTheStopsAre}
       </NotRead>
       <div className="grid gap-5 lg:grid-cols-[minmax(0,1fr)_minmax(360px,420px)]">
         <div className="grid min-w-0 content-start gap-5 self-start lg:sticky lg:top-4">
           {stops.length > 0 && drawable && (
             <Sheet
               id="roof"
-              title="The roof"
+              title={walkBoard.theRoof}
               flush
-              aside={metres > 0 ? `about ${number(metres)} m from the first stop to the last` : undefined}
+              aside={metres > 0 ? walkBoard.aboutFromTheFirst(metres) : undefined}
             >
               <div className="hidden sm:block">
                 <Walk {...roof} width={760} />
@@ -91,28 +87,21 @@ export function WalkBoard({ initial, view: asked }: Props) {
               <div className="sm:hidden">
                 <Walk {...roof} width={340} close />
               </div>
-              <p className="mt-2 text-sm text-ink-2">
-                A square is a stop, with its position counted from the negative end: filled, stuck or not
-                shutting down; dashed, unheard or without a unit; crossed, silent. Dotted: the way.
-              </p>
+              <p className="mt-2 text-sm text-ink-2">{walkBoard.aSquareIsA}</p>
             </Sheet>
           )}
           {stops.length > 0 && !drawable && (
             <Notice
               kind="empty"
-              title="No place on the roof is drawn for these strings"
+              title={walkBoard.noPlaceOnThe}
               action={
                 <a className="text-petrol hover:underline" href={paths.roofPlan(id)}>
-                  Draw them
+                  {walkBoard.drawThem}
                 </a>
               }
             />
           )}
-          <Caution strong="Shutdown is not isolation.">
-            Each module and its leads to its unit stay at module voltage in light. Never open a connector
-            under load. Isolate, lock out, prove dead with a rated meter; local code first, qualified people
-            only.
-          </Caution>
+          <Caution strong={walkBoard.shutdownIsNotIsolation}>{walkBoard.eachModuleAndIts}</Caution>
         </div>
         <div className="grid min-w-0 content-start gap-5">
           <StopList
@@ -125,18 +114,18 @@ export function WalkBoard({ initial, view: asked }: Props) {
             onPutBack={(back) => choose([...stops, ...back])}
           />
           {stops.length > 0 && (
-            <Sheet id="card" title="Ladder card">
+            <Sheet id="card" title={walkBoard.ladderCard}>
               <p className="mb-3 text-ink-2">
-                One screen for the pocket: places,{' '}
-                {spares.units.map((u) => counted(u.count, 'spare unit')).join(', ')}, connector types, what
-                the meter should read.
+                {walkBoard.oneScreenForThe(
+                  spares.units.map((u) => counted(u.count, 'spare unit')).join(', '),
+                )}
               </p>
               <ButtonLink
                 weight="primary"
                 className="w-full"
                 href={withQuery(paths.walk(id), { stops: view.stops, string: view.string, view: 'card' })}
               >
-                Open the ladder card
+                {walkBoard.openTheLadderCard}
               </ButtonLink>
             </Sheet>
           )}

@@ -2,6 +2,7 @@ import { ordered, stopsOf, type Stop, type WalkString } from '../../domain/commi
 import type { WalkedString } from '../../drawings/Walk';
 import type { SlotNow, StringNow } from '../../schemas/api/now';
 import type { WalkPage, WalkRoofString, WalkView } from '../../schemas/api/walk';
+import { walkStops } from '../../words/walk';
 
 export type { Stop, StopKind } from '../../domain/commissioning/walk';
 
@@ -87,8 +88,8 @@ export function sparesOf(page: WalkPage, stops: readonly Stop[]): Spares {
     units.set(string.unitType, (units.get(string.unitType) ?? 0) + 1);
     const { module, unitIn, unitOut } = string.connectors;
     for (const joint of [
-      { where: 'module to unit', halves: [module, unitIn] as [string | null, string | null] },
-      { where: 'unit to unit', halves: [unitOut, unitOut] as [string | null, string | null] },
+      { where: walkStops.moduleToUnit, halves: [module, unitIn] as [string | null, string | null] },
+      { where: walkStops.unitToUnit, halves: [unitOut, unitOut] as [string | null, string | null] },
     ])
       joints.set(`${joint.where} ${joint.halves.join()}`, joint);
   }
