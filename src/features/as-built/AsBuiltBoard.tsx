@@ -15,6 +15,7 @@ import { EMPTY_DRAFT, isEmpty, type SlotsDraft } from './slots-draft';
 import { SlotsDialog } from './SlotsDialog';
 import { StringsSheet, VIEW_DEFAULTS } from './StringsSheet';
 import { TokenDialog } from './TokenDialog';
+import { asBuiltBoard } from '../../words/as-built';
 
 interface Props {
   initial: AsBuilt;
@@ -55,7 +56,7 @@ export function AsBuiltBoard({ initial, view: initialView, mayWrite, timeZones }
     setEditing(null);
     const [id] = added?.ids ?? [];
     if (added?.token && id !== undefined)
-      setToken({ logger: { id, serial: 'just added', hasToken: true }, token: added.token });
+      setToken({ logger: { id, serial: asBuiltBoard.justAdded, hasToken: true }, token: added.token });
     else if (of.kind === 'string' && of.id === null && added?.ids.length === 1 && id !== undefined)
       change({ string: id });
   };
@@ -64,9 +65,9 @@ export function AsBuiltBoard({ initial, view: initialView, mayWrite, timeZones }
     <>
       <Heading
         crumbs={[
-          { label: 'Commissioning', href: paths.commissioning() },
+          { label: asBuiltBoard.commissioning, href: paths.commissioning() },
           { label: built.site.name, href: paths.commissioningSite(site) },
-          { label: 'As-built' },
+          { label: asBuiltBoard.asBuilt },
         ]}
         finding={finding.heading}
         sentence={finding.sentence}
@@ -74,24 +75,21 @@ export function AsBuiltBoard({ initial, view: initialView, mayWrite, timeZones }
       <p className="sr-only" role="status">
         {finding.heading}
       </p>
-      <nav
-        aria-label="What the as-built is made and checked with"
-        className="no-print mb-6 flex flex-wrap gap-2"
-      >
-        {mayWrite && <ButtonLink href={paths.asBuiltImport(site)}>From a file or a paste</ButtonLink>}
-        {mayWrite && <ButtonLink href={paths.serials(site)}>Read serials on site</ButtonLink>}
-        <ButtonLink href={paths.roofPlan(site)}>Roof plan</ButtonLink>
-        <ButtonLink href={paths.designChecks(site)}>Design checks</ButtonLink>
-        <ButtonLink href={paths.asBuiltHistory(site)}>History</ButtonLink>
+      <nav aria-label={asBuiltBoard.whatTheAsBuilt} className="no-print mb-6 flex flex-wrap gap-2">
+        {mayWrite && <ButtonLink href={paths.asBuiltImport(site)}>{asBuiltBoard.fromAFileOr}</ButtonLink>}
+        {mayWrite && <ButtonLink href={paths.serials(site)}>{asBuiltBoard.readSerialsOnSite}</ButtonLink>}
+        <ButtonLink href={paths.roofPlan(site)}>{asBuiltBoard.roofPlan}</ButtonLink>
+        <ButtonLink href={paths.designChecks(site)}>{asBuiltBoard.designChecks}</ButtonLink>
+        <ButtonLink href={paths.asBuiltHistory(site)}>{asBuiltBoard.history}</ButtonLink>
       </nav>
       <NotRead
         error={error}
-        title="The as-built could not be read anew"
+        title={asBuiltBoard.theAsBuiltCould}
         kind="failed"
         onRetry={() => refetch()}
         className="mb-6"
       >
-        What is shown may be old.
+        {asBuiltBoard.whatIsShownMay}
       </NotRead>
       <div className="grid gap-5 lg:grid-cols-[minmax(0,1fr)_360px]">
         {/* on a phone what strings name comes between the strings and the rest */}

@@ -8,21 +8,21 @@ import { NotRead } from '../../components/ui/NotRead';
 import { Notice } from '../../components/ui/Notice';
 import { Sheet } from '../../components/ui/Sheet';
 import { SiteTime } from '../../components/ui/Time';
-import { counted } from '../../drawings/numbers';
 import { api, withQuery } from '../../lib/api';
 import { queryClient } from '../../lib/query-client';
 import { useViewInUrl } from '../../lib/view-in-url';
 import type { HistoryItem, HistoryPage, HistoryView, Stay } from '../../schemas/api/as-built';
 import { paths } from '../../schemas/paths';
 import { changedFields, historyTitle, sourceWords } from './history-words';
+import { historyBoard } from '../../words/as-built-history';
 
 export const HISTORY_DEFAULTS: HistoryView = { find: '', kind: 'all', person: '', string: '' };
 const KINDS = [
-  { value: 'all', label: 'Everything' },
-  { value: 'units', label: 'Units' },
-  { value: 'strings', label: 'Strings and slots' },
-  { value: 'parts', label: 'Other parts' },
-  { value: 'site', label: 'The site' },
+  { value: 'all', label: historyBoard.everything },
+  { value: 'units', label: historyBoard.units },
+  { value: 'strings', label: historyBoard.stringsAndSlots },
+  { value: 'parts', label: historyBoard.otherParts },
+  { value: 'site', label: historyBoard.theSite },
 ] as const;
 
 interface Props {
@@ -61,58 +61,58 @@ export function HistoryBoard({ initial, view: initialView }: Props) {
   const finding = newest
     ? historyTitle(newest)
     : filtered
-      ? 'No change fits'
-      : 'Nothing has been changed here yet';
+      ? historyBoard.noChangeFits
+      : historyBoard.nothingHasBeenChanged;
   return (
     <>
       <Heading
         crumbs={[
-          { label: 'Commissioning', href: paths.commissioning() },
+          { label: historyBoard.commissioning, href: paths.commissioning() },
           { label: site.name, href: paths.commissioningSite(site.id) },
-          { label: 'As-built', href: paths.asBuilt(site.id) },
-          { label: 'History' },
+          { label: historyBoard.asBuilt, href: paths.asBuilt(site.id) },
+          { label: historyBoard.history },
         ]}
         finding={finding}
         sentence={
           newest ? (
             <>
-              {filtered ? 'The newest change that fits, by ' : 'The newest change, by '}
-              {newest.person} at <SiteTime at={newest.at} now={initial.at} timeZone={site.timeZone} zone />
+              {historyBoard.filteredPersonAt(filtered, newest.person)}
+              <SiteTime at={newest.at} now={initial.at} timeZone={site.timeZone} zone />
               {newest.reason ? <>: “{newest.reason}”</> : '.'}
             </>
           ) : (
-            'Every change of the as-built is kept with who made it, when and why.'
+            historyBoard.everyChangeOfThe
           )
         }
       />
       <div className="no-print mb-5 grid items-end gap-3 sm:grid-cols-2 lg:grid-cols-[1fr_180px_180px_180px_auto]">
         <Field
-          label="Serial, name or reason"
+          label={historyBoard.serialNameOrReason}
           type="search"
           autoComplete="off"
           value={view.find}
           onChange={(e) => change({ find: e.target.value }, 'typed')}
         />
         <Choice
-          label="What"
+          label={historyBoard.what}
           value={view.kind}
           options={KINDS}
           onChange={(kind) => change({ kind: KINDS.find((k) => k.value === kind)?.value ?? 'all' })}
         />
         <Choice
-          label="String"
+          label={historyBoard.string}
           value={view.string}
           options={[
-            { value: '', label: 'Every string' },
+            { value: '', label: historyBoard.everyString },
             ...initial.strings.map((s) => ({ value: s.id, label: s.name })),
           ]}
           onChange={(string) => change({ string })}
         />
         <Choice
-          label="Person"
+          label={historyBoard.person}
           value={view.person}
           options={[
-            { value: '', label: 'Everybody' },
+            { value: '', label: historyBoard.everybody },
             ...initial.people.map((p) => ({ value: p.id, label: p.name })),
           ]}
           onChange={(person) => change({ person })}
@@ -127,7 +127,7 @@ export function HistoryBoard({ initial, view: initialView }: Props) {
       </div>
       <NotRead
         error={error}
-        title="The history could not be read"
+        title={historyBoard.theHistoryCouldNot}
         kind="failed"
         onRetry={() => refetch()}
         className="mb-5"
@@ -135,15 +135,17 @@ export function HistoryBoard({ initial, view: initialView }: Props) {
       {stays.length > 0 && <Life stays={stays} page={initial} />}
       <Sheet
         id="changes"
-        title="Changes"
-        aside={`newest first, times in ${site.timeZone.replaceAll('_', ' ')}`}
+        title={historyBoard.changes}
+        aside={historyBoard.newestFirstTimesIn(site.timeZone.replaceAll('_', ' '))}
       >
         {items.length === 0 ? (
           <Notice
             kind="empty"
-            title={filtered ? 'No change fits' : 'Nothing has been changed here yet'}
+            title={filtered ? historyBoard.noChangeFits : historyBoard.nothingHasBeenChanged}
             action={
-              filtered ? <Button onClick={() => change(HISTORY_DEFAULTS)}>Show everything</Button> : undefined
+              filtered ? (
+                <Button onClick={() => change(HISTORY_DEFAULTS)}>{historyBoard.showEverything}</Button>
+              ) : undefined
             }
           />
         ) : (
@@ -155,7 +157,7 @@ export function HistoryBoard({ initial, view: initialView }: Props) {
         )}
         {hasNextPage && (
           <Button className="mt-4" onClick={() => void fetchNextPage()} disabled={isFetchingNextPage}>
-            {isFetchingNextPage ? 'Reading …' : 'Older changes'}
+            {isFetchingNextPage ? historyBoard.reading : historyBoard.olderChanges}
           </Button>
         )}
       </Sheet>
@@ -181,7 +183,7 @@ function Entry({ item, page }: { item: HistoryItem; page: HistoryPage }) {
         {fields.length > 0 && (
           <details className="mt-1" open={fields.length <= 3}>
             <summary className="cursor-pointer py-1 text-sm text-ink-2">
-              {counted(fields.length, 'field')}
+              {historyBoard.countedFieldsField(fields.length)}
             </summary>
             <dl className="text-sm">
               {fields.map((f) => (
@@ -210,7 +212,7 @@ function Life({ stays, page }: { stays: readonly Stay[]; page: HistoryPage }) {
     <Sheet
       id="life"
       className="mb-5"
-      title={`${first.serial} ${last.to === null ? `sits in ${last.string}, position ${last.position}` : 'sits in no slot now'}`}
+      title={historyBoard.serialToNullSits(first.serial, last.to, last.string, last.position)}
       aside={first.unitType}
     >
       <ol>
@@ -224,18 +226,19 @@ function Life({ stays, page }: { stays: readonly Stay[]; page: HistoryPage }) {
                 className="text-petrol hover:underline"
                 href={`${paths.asBuilt(stay.siteId)}?string=${stay.stringId}`}
               >
-                {stay.string}, position {stay.position}
+                {historyBoard.whichPositionPosition(stay.string, stay.position)}
               </a>
             </span>
             {stay.siteId !== page.site.id && <span>{stay.site}</span>}
             <span className="text-ink-2">
-              from <SiteTime at={stay.from} now={page.at} timeZone={page.site.timeZone} />
+              {historyBoard.from}
+              <SiteTime at={stay.from} now={page.at} timeZone={page.site.timeZone} />
               {stay.to === null ? (
-                ', still there'
+                historyBoard.stillThere
               ) : (
                 <>
-                  {' '}
-                  to <SiteTime at={stay.to} now={page.at} timeZone={page.site.timeZone} />
+                  {historyBoard.to}
+                  <SiteTime at={stay.to} now={page.at} timeZone={page.site.timeZone} />
                 </>
               )}
             </span>

@@ -12,6 +12,7 @@ import { paths } from '../../schemas/paths';
 import { typedNumber } from '../../schemas/typed-number';
 import { formOf, readForm, serverFaults, type Faults, type Form } from './form';
 import { PartFields } from './PartFields';
+import { newSite } from '../../words/new-site';
 
 interface Props {
   timeZones: readonly string[];
@@ -22,10 +23,10 @@ interface Props {
 }
 
 const GROUPS = [
-  { title: 'Which site', keys: ['name', 'place', 'contactName', 'contactPhone'] },
-  { title: 'Where', keys: ['latitude', 'longitude', 'altitude', 'timeZone'] },
-  { title: 'Rules and design', keys: ['ruleSet', 'structure', 'temperatureMin', 'temperatureMax'] },
-  { title: 'Shutdown and reports', keys: ['shutdownSwitchPlace', 'reportIntervalS'] },
+  { title: newSite.whichSite, keys: ['name', 'place', 'contactName', 'contactPhone'] },
+  { title: newSite.where, keys: ['latitude', 'longitude', 'altitude', 'timeZone'] },
+  { title: newSite.rulesAndDesign, keys: ['ruleSet', 'structure', 'temperatureMin', 'temperatureMax'] },
+  { title: newSite.shutdownAndReports, keys: ['shutdownSwitchPlace', 'reportIntervalS'] },
 ] as const;
 
 const never = () => () => undefined;
@@ -78,10 +79,7 @@ export function NewSite({ timeZones, timeZone, at }: Props) {
           </div>
           {group.title === 'Where' && <SunAndClock form={form} at={at} />}
           {group.title === 'Shutdown and reports' && (
-            <p className="mt-4 text-ink-2">
-              An initiator at this switch and a zone for the whole site are made with it. A site with several
-              gets the others on its as-built page.
-            </p>
+            <p className="mt-4 text-ink-2">{newSite.anInitiatorAtThis}</p>
           )}
         </Sheet>
       ))}
@@ -90,7 +88,7 @@ export function NewSite({ timeZones, timeZone, at }: Props) {
           <div className="mb-4">
             <Notice
               kind="failed"
-              title={create.error instanceof ApiError ? create.error.title : 'Something is missing or wrong'}
+              title={create.error instanceof ApiError ? create.error.title : newSite.somethingIsMissingOr}
             >
               {create.error?.message ?? Object.values(faults).join(' ')}
             </Notice>
@@ -103,9 +101,9 @@ export function NewSite({ timeZones, timeZone, at }: Props) {
             weight="primary"
             disabled={browserZone === null || create.isPending || create.isSuccess}
           >
-            {create.isPending || create.isSuccess ? 'Creating …' : 'Create the site'}
+            {create.isPending || create.isSuccess ? newSite.creating : newSite.createTheSite}
           </Button>
-          <ButtonLink href={paths.commissioning()}>Back to commissioning</ButtonLink>
+          <ButtonLink href={paths.commissioning()}>{newSite.backToCommissioning}</ButtonLink>
         </div>
       </div>
     </form>
@@ -124,8 +122,7 @@ function SunAndClock({ form, at }: { form: Form; at: string }) {
   if (Math.abs(ahead) <= PLAUSIBLE_H) return null;
   return (
     <p role="status" className="mt-4 font-medium text-rust-ink">
-      At this longitude the sun and the clock of {zone.replaceAll('_', ' ')} are {Math.round(Math.abs(ahead))}{' '}
-      hours apart. Is the sign of the longitude right (west is negative), and the zone?
+      {newSite.atThisLongitudeThe(zone.replaceAll('_', ' '), Math.round(Math.abs(ahead)))}
     </p>
   );
 }

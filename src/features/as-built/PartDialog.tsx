@@ -13,6 +13,7 @@ import { labelOf, partOf } from '../../schemas/as-built-values';
 import { changedKeys, formOf, readForm, serverFaults, type Faults, type Form } from './form';
 import { PartFields } from './PartFields';
 import { addPart, asBuiltKey, changePart, readAsBuilt, removePart } from './queries';
+import { partDialog } from '../../words/as-built';
 
 /** Which form is open: a new part, or one to edit. */
 export interface Editing {
@@ -166,7 +167,9 @@ export function PartDialog({ built, editing, timeZones, onClose, onSaved }: Prop
     save.error.message.startsWith('Somebody changed');
   const error = save.error ?? remove.error ?? rebase.error;
   const title =
-    id === null ? `Add ${words.a}` : `${words.one.charAt(0).toUpperCase()}${words.one.slice(1)} ${label}`;
+    id === null
+      ? partDialog.addA(words.a)
+      : `${words.one.charAt(0).toUpperCase()}${words.one.slice(1)} ${label}`;
   const askReason = operating || faults.reason !== undefined || asking;
 
   return (
@@ -174,12 +177,12 @@ export function PartDialog({ built, editing, timeZones, onClose, onSaved }: Prop
       <form onSubmit={submit} noValidate>
         {error && (
           <div className="mb-4">
-            <Notice kind="failed" title={error instanceof ApiError ? error.title : 'It did not work'}>
+            <Notice kind="failed" title={error instanceof ApiError ? error.title : partDialog.itDidNotWork}>
               {error.message}
               {clash && (
                 <div className="mt-3 flex flex-wrap gap-2">
                   <Button onClick={() => rebase.mutate()} disabled={rebase.isPending}>
-                    Keep what I typed and go on
+                    {partDialog.keepWhatITyped}
                   </Button>
                   <Button
                     onClick={() => {
@@ -187,7 +190,7 @@ export function PartDialog({ built, editing, timeZones, onClose, onSaved }: Prop
                       onClose();
                     }}
                   >
-                    Leave theirs
+                    {partDialog.leaveTheirs}
                   </Button>
                 </div>
               )}
@@ -206,13 +209,13 @@ export function PartDialog({ built, editing, timeZones, onClose, onSaved }: Prop
           />
           {kind === 'string' && id === null && (
             <Field
-              label="How many alike"
+              label={partDialog.howManyAlike}
               name="alike"
               inputMode="numeric"
               value={alike}
               onChange={(e) => setAlike(e.target.value)}
               error={faults.alike ?? null}
-              hint="Names are counted up: B1, B2, B3."
+              hint={partDialog.namesAreCountedUp}
             />
           )}
           {kind === 'string' && id === null && several > 1 && (
@@ -224,39 +227,39 @@ export function PartDialog({ built, editing, timeZones, onClose, onSaved }: Prop
                 onChange={(e) => setInTurn(e.target.checked)}
                 className="h-5 w-5 flex-none accent-petrol"
               />
-              Each on the next input
+              {partDialog.eachOnTheNext}
             </label>
           )}
         </div>
         {askReason && (
           <Field
             className="mt-4"
-            label="Why"
+            label={partDialog.why}
             name="reason"
             value={reason}
             maxLength={500}
             onChange={(e) => setReason(e.target.value)}
             error={faults.reason ?? null}
-            hint="A few words; they stay in the history."
+            hint={partDialog.aFewWordsThey}
           />
         )}
         <div className="sticky -bottom-5 -mx-5 -mb-5 mt-5 flex flex-wrap gap-2 border-t border-rule bg-sheet px-5 py-3">
           <Button type="submit" weight="primary" disabled={save.isPending || clash}>
             {save.isPending
-              ? 'Saving …'
+              ? partDialog.saving
               : id !== null
-                ? 'Save'
-                : `Add the ${several > 1 ? words.many : words.one}`}
+                ? partDialog.save
+                : partDialog.addThe(several, words.many, words.one)}
           </Button>
           {id !== null && kind !== 'site' && !asking && (
-            <Button onClick={() => setAsking(true)}>Delete …</Button>
+            <Button onClick={() => setAsking(true)}>{partDialog.delete}</Button>
           )}
           {asking && (
             <Button onClick={() => remove.mutate()} disabled={remove.isPending}>
-              {remove.isPending ? 'Deleting …' : `Delete ${label} for good`}
+              {remove.isPending ? partDialog.deleting : partDialog.deleteForGood(label)}
             </Button>
           )}
-          <Button onClick={onClose}>Close</Button>
+          <Button onClick={onClose}>{partDialog.close}</Button>
         </div>
       </form>
     </Dialog>

@@ -6,6 +6,7 @@ import { PART_FIELDS } from '../../domain/commissioning/as-built/parts';
 import type { AsBuilt } from '../../schemas/api/as-built';
 import { namedOptions } from '../../schemas/as-built-values';
 import type { Faults, Form, FormValue } from './form';
+import { partFields } from '../../words/as-built';
 
 interface Props {
   kind: PartKind;
@@ -95,7 +96,8 @@ function OneField({
       const options = parts ? namedOptions(parts, field.of, text === '' ? [] : [text]) : [];
       // a new string has one module type; several are what single slots were given since
       const several = field.key === 'moduleType';
-      const none = field.optional && !(several && adding) ? (field.none ?? 'None') : 'Choose …';
+      const none =
+        field.optional && !(several && adding) ? (field.none ?? partFields.none) : partFields.choose;
       return (
         <Choice
           {...common}
@@ -138,7 +140,7 @@ function OneField({
 
 const labelWithMark = (field: PartField): string =>
   'optional' in field && field.optional && field.kind !== 'part'
-    ? `${field.label} (may stay empty)`
+    ? partFields.mayStayEmpty(field.label)
     : field.label;
 
 function Several({
@@ -164,7 +166,7 @@ function Several({
     >
       <legend className="mb-1 font-medium">{field.label}</legend>
       {options.length === 0 ? (
-        <p className="text-ink-2">There is none yet.</p>
+        <p className="text-ink-2">{partFields.thereIsNoneYet}</p>
       ) : (
         <div className="flex max-h-[220px] flex-wrap gap-x-4 overflow-y-auto">
           {options.map((o) => (

@@ -9,11 +9,12 @@ import {
   STRUCTURES,
   type PartKind,
 } from '../../domain/commissioning/as-built/parts';
-import { celsius, counted, power } from '../../drawings/numbers';
+import { celsius, power } from '../../drawings/numbers';
 import type { AsBuilt } from '../../schemas/api/as-built';
 import { nameOf } from '../../schemas/as-built-values';
 import { paths } from '../../schemas/paths';
 import type { Editing } from './PartDialog';
+import { partsSheets } from '../../words/as-built';
 
 interface Props {
   built: AsBuilt;
@@ -64,7 +65,7 @@ function Parts<T extends { id: string }>({
       }
     >
       {rows.length === 0 ? (
-        <p className="text-ink-2">{blocked ?? `No ${words.many} yet.`}</p>
+        <p className="text-ink-2">{blocked ?? partsSheets.noYet(words.many)}</p>
       ) : (
         <ul>
           {rows.map((row) => (
@@ -81,10 +82,10 @@ function Parts<T extends { id: string }>({
                 <button
                   type="button"
                   className="target px-2 text-petrol hover:underline"
-                  aria-label={`Edit ${words.one} ${name(row)}`}
+                  aria-label={partsSheets.editOneRow(words.one, name(row))}
                   onClick={() => onEdit({ kind, id: row.id })}
                 >
-                  Edit
+                  {partsSheets.edit}
                 </button>
               )}
             </li>
@@ -93,7 +94,7 @@ function Parts<T extends { id: string }>({
       )}
       {mayWrite && !blocked && (
         <Button className="mt-3" onClick={() => onEdit({ kind, id: null })}>
-          Add {words.a}
+          {partsSheets.addA(words.a)}
         </Button>
       )}
     </Sheet>
@@ -101,7 +102,7 @@ function Parts<T extends { id: string }>({
 }
 
 const stringsOn = (built: AsBuilt, test: (s: AsBuilt['strings'][number]) => boolean): string =>
-  counted(built.strings.filter(test).length, 'string');
+  partsSheets.countedTestString(built.strings.filter(test).length);
 const degrees = (value: number): string => `${String(value).replace('-', '−')}°`;
 
 /** What strings name: planes, inverters, loggers, transmitters. */
@@ -113,40 +114,45 @@ export function PartsSheets({ built, mayWrite, onEdit, onToken }: Props) {
       <Parts
         {...common}
         kind="plane"
-        title="Planes"
+        title={partsSheets.planes}
         rows={built.planes}
         name={(p) => p.name}
         detail={(p) =>
-          `tilt ${degrees(p.surfaceTilt)}, azimuth ${degrees(p.surfaceAzimuth)}; ${stringsOn(built, (s) => s.plane === p.id)}`
+          partsSheets.tiltAzimuth(
+            degrees(p.surfaceTilt),
+            degrees(p.surfaceAzimuth),
+            stringsOn(built, (s) => s.plane === p.id),
+          )
         }
       />
       <Parts
         {...common}
         kind="inverter"
-        title="Inverters"
+        title={partsSheets.inverters}
         rows={built.inverters}
         name={(v) => v.name}
         detail={(v) =>
-          `${v.inverterType === null ? 'type not in the catalogue' : nameOf(built, 'inverter_type', v.inverterType)}; ${power(v.acPowerMax)}, ${counted(v.inputs.length, 'input')}; ${stringsOn(built, (s) => v.inputs.some((i) => i.id === s.input))}`
+          `${v.inverterType === null ? partsSheets.typeNotInThe : nameOf(built, 'inverter_type', v.inverterType)}; ${power(v.acPowerMax)}, ${partsSheets.countedInputsInput(v.inputs.length)}; ${stringsOn(built, (s) => v.inputs.some((i) => i.id === s.input))}`
         }
       />
       <Parts
         {...common}
         kind="logger"
-        title="Loggers"
-        link={{ words: 'Tokens, and what was refused', href: paths.loggers(site.id) }}
+        title={partsSheets.loggers}
+        link={{ words: partsSheets.tokensAndWhatWas, href: paths.loggers(site.id) }}
         rows={built.loggers}
         name={(l) => l.serial}
         detail={(l) => (
           <>
             {l.lastSpokeAt ? (
               <>
-                last spoke <SiteTime at={l.lastSpokeAt} now={built.at} timeZone={site.timeZone} zone />
+                {partsSheets.lastSpoke}
+                <SiteTime at={l.lastSpokeAt} now={built.at} timeZone={site.timeZone} zone />
               </>
             ) : (
-              'has not spoken yet'
+              partsSheets.hasNotSpokenYet
             )}
-            ; {l.tokenAt === null ? 'no token' : 'has a token'}
+            ; {l.tokenAt === null ? partsSheets.noToken : partsSheets.hasAToken}
           </>
         )}
         extra={(l) =>
@@ -156,7 +162,7 @@ export function PartsSheets({ built, mayWrite, onEdit, onToken }: Props) {
               className="target text-petrol hover:underline"
               onClick={() => onToken({ id: l.id, serial: l.serial, hasToken: l.tokenAt !== null })}
             >
-              {l.tokenAt === null ? 'Make a token' : 'Make a new token'}
+              {l.tokenAt === null ? partsSheets.makeAToken : partsSheets.makeANewToken}
             </button>
           )
         }
@@ -164,11 +170,15 @@ export function PartsSheets({ built, mayWrite, onEdit, onToken }: Props) {
       <Parts
         {...common}
         kind="transmitter"
-        title="Transmitters"
+        title={partsSheets.transmitters}
         rows={built.transmitters}
         name={(t) => t.name}
         detail={(t) =>
-          `zone ${nameOf(built, 'zone', t.zone) ?? ''}; ${t.strings.length === 0 ? 'serves no string' : `serves ${t.strings.map((s) => nameOf(built, 'string', s)).join(', ')}`}`
+          partsSheets.zoneBuiltStrings0(
+            nameOf(built, 'zone', t.zone),
+            t.strings.length,
+            t.strings.map((s) => nameOf(built, 'string', s)).join(', '),
+          )
         }
         blocked={built.zones.length === 0 ? 'A transmitter needs a zone first.' : null}
       />
@@ -185,15 +195,15 @@ export function SiteSheets({ built, mayWrite, onEdit }: Omit<Props, 'onToken'>) 
       <Parts
         {...common}
         kind="initiator"
-        title="Initiators"
+        title={partsSheets.initiators}
         rows={built.initiators}
         name={(i) => i.name}
-        detail={(i) => i.place || 'place not entered'}
+        detail={(i) => i.place || partsSheets.placeNotEntered}
       />
       <Parts
         {...common}
         kind="zone"
-        title="Zones"
+        title={partsSheets.zones}
         rows={built.zones}
         name={(z) => z.name}
         detail={(z) =>
@@ -204,35 +214,40 @@ export function SiteSheets({ built, mayWrite, onEdit }: Omit<Props, 'onToken'>) 
       <Parts
         {...common}
         kind="sensor"
-        title="Sensors"
+        title={partsSheets.sensors}
         rows={built.sensors}
         name={(s) => choice(SENSOR_KINDS, s.kind)}
         detail={(s) =>
-          `number ${s.number} at ${nameOf(built, 'logger', s.logger) ?? ''}${s.plane === null ? '' : `; ${nameOf(built, 'plane', s.plane) ?? ''}`}`
+          partsSheets.numberAtLogger(
+            s.number,
+            nameOf(built, 'logger', s.logger),
+            s.plane === null ? undefined : (nameOf(built, 'plane', s.plane) ?? ''),
+          )
         }
         blocked={built.loggers.length === 0 ? 'A sensor needs a logger first.' : null}
       />
-      <Sheet id="parts-site" title="Site" level={3}>
+      <Sheet id="parts-site" title={partsSheets.site} level={3}>
         <dl className="grid gap-2">
           <Fact name="Place">
-            {site.place || 'not entered'}; {degrees(site.latitude)}, {degrees(site.longitude)}
+            {site.place || partsSheets.notEntered}; {degrees(site.latitude)}, {degrees(site.longitude)}
           </Fact>
           <Fact name="Time zone">{site.timeZone.replaceAll('_', ' ')}</Fact>
           <Fact name="Rules">
             {choice(RULE_SETS, site.ruleSet)}; {choice(STRUCTURES, site.structure).toLowerCase()}
           </Fact>
           <Fact name="Air, coldest and hottest">
-            {site.temperatureMin === null ? 'not entered' : celsius(site.temperatureMin)},{' '}
-            {site.temperatureMax === null ? 'not entered' : celsius(site.temperatureMax)}
+            {site.temperatureMin === null ? partsSheets.notEntered : celsius(site.temperatureMin)},{' '}
+            {site.temperatureMax === null ? partsSheets.notEntered : celsius(site.temperatureMax)}
           </Fact>
-          <Fact name="Shutdown switch">{site.shutdownSwitchPlace || 'place not entered'}</Fact>
+          <Fact name="Shutdown switch">{site.shutdownSwitchPlace || partsSheets.placeNotEntered}</Fact>
           <Fact name="Contact">
-            {[site.contactName, site.contactPhone].filter((c) => c !== '').join(', ') || 'not entered'}
+            {[site.contactName, site.contactPhone].filter((c) => c !== '').join(', ') ||
+              partsSheets.notEntered}
           </Fact>
         </dl>
         {mayWrite && (
           <Button className="mt-3" onClick={() => onEdit({ kind: 'site', id: site.id })}>
-            Edit the site
+            {partsSheets.editTheSite}
           </Button>
         )}
       </Sheet>

@@ -4,7 +4,6 @@ import { Button, ButtonLink } from '../../components/ui/Button';
 import { Dialog } from '../../components/ui/Dialog';
 import { Field } from '../../components/ui/Field';
 import { Notice } from '../../components/ui/Notice';
-import { counted } from '../../drawings/numbers';
 import { ApiError } from '../../lib/api';
 import { queryClient } from '../../lib/query-client';
 import type { AsBuilt, StringBuilt } from '../../schemas/api/as-built';
@@ -22,6 +21,7 @@ import {
   withSerial,
   type SlotsDraft,
 } from './slots-draft';
+import { slotsDialog } from '../../words/as-built';
 
 interface Props {
   built: AsBuilt;
@@ -110,17 +110,22 @@ export function SlotsDialog({ built, string, draft, mayWrite, onDraft, onEditStr
   };
 
   return (
-    <Dialog open title={`String ${string.name}`} onClose={onClose}>
+    <Dialog open title={slotsDialog.stringWhich(string.name)} onClose={onClose}>
       <p className="mb-3 text-ink-2">
-        {counted(string.slots.length, 'slot')} from the negative end on,{' '}
-        {gaps === 0 ? 'each with a serial' : `${gaps} without a serial`}.{' '}
+        {slotsDialog.slotsFromTheNegative(string.slots.length, gaps)}
         {nameOf(built, 'unit_type', string.unitType)}; {nameOf(built, 'plane', string.plane)};{' '}
-        {nameOf(built, 'input', string.input)}; zone {nameOf(built, 'zone', string.zone)}.
+        {nameOf(built, 'input', string.input)}
+        {slotsDialog.zone}
+        {nameOf(built, 'zone', string.zone)}.
       </p>
       <div className="mb-4 flex flex-wrap gap-2">
-        {mayWrite && <Button onClick={onEditString}>Edit the string</Button>}
-        {mayWrite && <ButtonLink href={paths.serials(site, string.id)}>Read serials on site</ButtonLink>}
-        <ButtonLink href={`${paths.asBuiltHistory(site)}?string=${string.id}`}>History</ButtonLink>
+        {mayWrite && <Button onClick={onEditString}>{slotsDialog.editTheString}</Button>}
+        {mayWrite && (
+          <ButtonLink href={paths.serials(site, string.id)}>{slotsDialog.readSerialsOnSite}</ButtonLink>
+        )}
+        <ButtonLink href={`${paths.asBuiltHistory(site)}?string=${string.id}`}>
+          {slotsDialog.history}
+        </ButtonLink>
       </div>
       <form onSubmit={submit} noValidate>
         <label className="mb-2 flex min-h-[44px] items-center gap-3">
@@ -130,7 +135,7 @@ export function SlotsDialog({ built, string, draft, mayWrite, onDraft, onEditStr
             onChange={(e) => setMore(e.target.checked)}
             className="h-5 w-5 flex-none accent-petrol"
           />
-          Module types and places on the roof
+          {slotsDialog.moduleTypesAndPlaces}
         </label>
         <ol ref={list} className="border-t border-rule">
           {string.slots.map((slot) => {
@@ -140,7 +145,7 @@ export function SlotsDialog({ built, string, draft, mayWrite, onDraft, onEditStr
               <li key={slot.position} className="border-b border-rule-faint py-1.5">
                 <div className="flex items-center gap-3">
                   <label htmlFor={id} className="w-8 flex-none text-right font-medium">
-                    <span className="sr-only">Serial at position </span>
+                    <span className="sr-only">{slotsDialog.serialAtPosition}</span>
                     {slot.position}
                   </label>
                   <input
@@ -148,7 +153,7 @@ export function SlotsDialog({ built, string, draft, mayWrite, onDraft, onEditStr
                     data-serial
                     name={id}
                     value={draft.serials[slot.position] ?? slot.serial ?? ''}
-                    placeholder="No serial yet"
+                    placeholder={slotsDialog.noSerialYet}
                     readOnly={!mayWrite}
                     autoComplete="off"
                     autoCapitalize="characters"
@@ -163,7 +168,7 @@ export function SlotsDialog({ built, string, draft, mayWrite, onDraft, onEditStr
                 {more && (
                   <div className="mt-1.5 grid gap-1.5 pl-11 sm:grid-cols-2">
                     <select
-                      aria-label={`Module type at position ${slot.position}`}
+                      aria-label={slotsDialog.moduleTypeAtPosition(slot.position)}
                       value={draft.types[slot.position] ?? slot.moduleType}
                       disabled={!mayWrite}
                       onChange={(e) =>
@@ -178,8 +183,8 @@ export function SlotsDialog({ built, string, draft, mayWrite, onDraft, onEditStr
                       ))}
                     </select>
                     <input
-                      aria-label={`Place on the roof of position ${slot.position}`}
-                      placeholder="Upper row, fifth from the gable"
+                      aria-label={slotsDialog.placeOnTheRoof(slot.position)}
+                      placeholder={slotsDialog.upperRowFifthFrom}
                       value={draft.places[slot.position] ?? slot.roofPlace}
                       readOnly={!mayWrite}
                       maxLength={200}
@@ -202,35 +207,33 @@ export function SlotsDialog({ built, string, draft, mayWrite, onDraft, onEditStr
         {mayWrite && askReason && (
           <Field
             className="mt-4"
-            label="Why"
+            label={slotsDialog.why}
             name="reason"
             value={reason}
             maxLength={500}
             onChange={(e) => setReason(e.target.value)}
             error={reasonFault ?? null}
-            hint="A few words; they stay in the history with the units that were here."
+            hint={slotsDialog.aFewWordsThey}
           />
         )}
         {save.error && (
           <div className="mt-4">
             <Notice
               kind="failed"
-              title={save.error instanceof ApiError ? save.error.title : 'It did not work'}
+              title={save.error instanceof ApiError ? save.error.title : slotsDialog.itDidNotWork}
             >
               {save.error.message}
               <div className="mt-3 flex flex-wrap gap-2">
                 {all('elsewhere') && (
-                  <Button onClick={() => save.mutate({ move: true })}>
-                    They were moved here: take them from there
-                  </Button>
+                  <Button onClick={() => save.mutate({ move: true })}>{slotsDialog.theyWereMovedHere}</Button>
                 )}
                 {all('foreign_type') && (
                   <Button onClick={() => save.mutate({ retype: true })}>
-                    The record is wrong: correct the type
+                    {slotsDialog.theRecordIsWrong}
                   </Button>
                 )}
                 {told.some((t) => t.kind === 'stale') && (
-                  <Button onClick={() => rebase.mutate()}>Keep what I typed and go on</Button>
+                  <Button onClick={() => rebase.mutate()}>{slotsDialog.keepWhatITyped}</Button>
                 )}
               </div>
             </Notice>
@@ -238,13 +241,13 @@ export function SlotsDialog({ built, string, draft, mayWrite, onDraft, onEditStr
         )}
         {save.isSuccess && isEmpty(draft) && (
           <div className="mt-4">
-            <Notice kind="done" title="Saved" />
+            <Notice kind="done" title={slotsDialog.saved} />
           </div>
         )}
         {mayWrite && (
           <div className="sticky -bottom-5 -mx-5 -mb-5 mt-4 flex flex-wrap gap-2 border-t border-rule bg-sheet px-5 py-3">
             <Button type="submit" weight="primary" disabled={save.isPending || isEmpty(draft)}>
-              {save.isPending ? 'Saving …' : 'Save the slots'}
+              {save.isPending ? slotsDialog.saving : slotsDialog.saveTheSlots}
             </Button>
             {!isEmpty(draft) && (
               <Button
@@ -253,10 +256,10 @@ export function SlotsDialog({ built, string, draft, mayWrite, onDraft, onEditStr
                   save.reset();
                 }}
               >
-                Undo what I typed
+                {slotsDialog.undoWhatITyped}
               </Button>
             )}
-            <Button onClick={onClose}>Close</Button>
+            <Button onClick={onClose}>{slotsDialog.close}</Button>
           </div>
         )}
       </form>

@@ -11,11 +11,12 @@ import { paths } from '../../schemas/paths';
 import { PART_WORDS, type PartKind } from '../../domain/commissioning/as-built/parts';
 import { gapsOf, listed, listedStrings, missingForStrings } from './finding';
 import { SlotsStrip } from './SlotsStrip';
+import { stringsSheet } from '../../words/as-built';
 
 export const VIEW_DEFAULTS: AsBuiltView = { find: '', show: 'all', sort: 'name', order: 'up', string: '' };
 const SHOWS = [
-  { value: 'all', label: 'All' },
-  { value: 'gaps', label: 'Without serials' },
+  { value: 'all', label: stringsSheet.all },
+  { value: 'gaps', label: stringsSheet.withoutSerials },
 ] as const;
 
 interface Props {
@@ -36,7 +37,7 @@ export function StringsSheet({ built, view, mayWrite, unsaved, onView, onOpen, o
   const columns: Column<StringBuilt>[] = [
     {
       key: 'name',
-      label: 'String',
+      label: stringsSheet.string,
       sortable: true,
       cell: (s) => (
         <button
@@ -45,52 +46,57 @@ export function StringsSheet({ built, view, mayWrite, unsaved, onView, onOpen, o
           onClick={() => onOpen(s.id)}
         >
           {s.name}
-          {unsaved.has(s.id) && <span className="ml-2 text-sm text-rust-ink">not saved</span>}
+          {unsaved.has(s.id) && <span className="ml-2 text-sm text-rust-ink">{stringsSheet.notSaved}</span>}
         </button>
       ),
     },
     {
       key: 'gaps',
-      label: 'Slots with a serial',
+      label: stringsSheet.slotsWithASerial,
       sortable: true,
       cell: (s) => <SlotsStrip slots={s.slots} />,
     },
     {
       key: 'slots',
-      label: 'Serials',
+      label: stringsSheet.serials,
       numeric: true,
       sortable: true,
       cell: (s) => `${s.slots.length - gapsOf(s)} / ${s.slots.length}`,
     },
     {
       key: 'plane',
-      label: 'Plane',
+      label: stringsSheet.plane,
       sortable: true,
       from: 'sm',
       cell: (s) => nameOf(built, 'plane', s.plane),
     },
     {
       key: 'input',
-      label: 'Input',
+      label: stringsSheet.input,
       sortable: true,
       from: 'md',
       cell: (s) => nameOf(built, 'input', s.input),
     },
-    { key: 'unitType', label: 'Unit type', from: 'lg', cell: (s) => nameOf(built, 'unit_type', s.unitType) },
-    { key: 'zone', label: 'Zone', from: 'lg', cell: (s) => nameOf(built, 'zone', s.zone) },
+    {
+      key: 'unitType',
+      label: stringsSheet.unitType,
+      from: 'lg',
+      cell: (s) => nameOf(built, 'unit_type', s.unitType),
+    },
+    { key: 'zone', label: stringsSheet.zone, from: 'lg', cell: (s) => nameOf(built, 'zone', s.zone) },
   ];
   return (
-    <Sheet id="strings" title="Strings" flush>
+    <Sheet id="strings" title={stringsSheet.strings} flush>
       {built.strings.length > 0 && (
         <div className="no-print mb-3 flex flex-wrap items-center gap-x-5 gap-y-2">
           <SearchInput
-            label="Find a string by name, serial or place on the roof"
-            placeholder="Name, serial or place"
+            label={stringsSheet.findAStringBy}
+            placeholder={stringsSheet.nameSerialOrPlace}
             value={view.find}
             onChange={(typed) => onView({ find: typed }, 'typed')}
           />
           <Segmented
-            label="Which strings"
+            label={stringsSheet.whichStrings}
             options={SHOWS}
             value={view.show}
             onChange={(show) => onView({ show })}
@@ -102,7 +108,7 @@ export function StringsSheet({ built, view, mayWrite, unsaved, onView, onOpen, o
       )}
       {built.strings.length > 0 ? (
         <Table
-          caption="Strings of this site"
+          caption={stringsSheet.stringsOfThisSite}
           columns={columns}
           rows={rows}
           rowKey={(s) => s.id}
@@ -111,16 +117,18 @@ export function StringsSheet({ built, view, mayWrite, unsaved, onView, onOpen, o
           empty={
             <Notice
               kind="empty"
-              title="No string fits"
-              action={<Button onClick={() => onView({ find: '', show: 'all' })}>Show all</Button>}
+              title={stringsSheet.noStringFits}
+              action={
+                <Button onClick={() => onView({ find: '', show: 'all' })}>{stringsSheet.showAll}</Button>
+              }
             />
           }
         />
       ) : (
-        <Notice kind="empty" title="No strings yet">
+        <Notice kind="empty" title={stringsSheet.noStringsYet}>
           {missing.length > 0
-            ? `Enter ${listed(missing.map((m) => m.words))} first: a string names them.`
-            : 'Several alike are entered at once: their names are counted up.'}
+            ? stringsSheet.enterFirstStringNames(listed(missing.map((m) => m.words)))
+            : stringsSheet.severalAlikeAreEntered}
         </Notice>
       )}
       {mayWrite && (
@@ -129,15 +137,15 @@ export function StringsSheet({ built, view, mayWrite, unsaved, onView, onOpen, o
             .flatMap((m) => m.add)
             .map((kind) => (
               <Button key={kind} weight="primary" onClick={() => onAdd(kind)}>
-                Add {PART_WORDS[kind].a}
+                {stringsSheet.addA(PART_WORDS[kind].a)}
               </Button>
             ))}
           {missing.some((m) => m.add.length === 0) && (
-            <ButtonLink href={paths.equipment()}>Open the catalogue</ButtonLink>
+            <ButtonLink href={paths.equipment()}>{stringsSheet.openTheCatalogue}</ButtonLink>
           )}
           {missing.length === 0 && (
             <Button weight="primary" onClick={() => onAdd('string')}>
-              Add strings
+              {stringsSheet.addStrings}
             </Button>
           )}
         </div>

@@ -8,6 +8,7 @@ import { Notice } from '../../components/ui/Notice';
 import { ApiError } from '../../lib/api';
 import { queryClient } from '../../lib/query-client';
 import { asBuiltKey, makeToken } from './queries';
+import { tokenDialog } from '../../words/as-built';
 
 interface Props {
   site: string;
@@ -31,33 +32,29 @@ export function TokenDialog({ site, logger, operating, token: given, onClose }: 
   );
   const token = given ?? make.data?.token ?? null;
   return (
-    <Dialog open title={`Token of logger ${logger.serial}`} onClose={onClose}>
+    <Dialog open title={tokenDialog.tokenOfLogger(logger.serial)} onClose={onClose}>
       {token === null ? (
         <>
-          <p className="mb-3">
-            {logger.hasToken
-              ? 'A new token ends the one in force at once: the logger is refused until it has the new one. What it has not sent yet stays in it.'
-              : 'With its token the logger may report here.'}
-          </p>
+          <p className="mb-3">{logger.hasToken ? tokenDialog.aNewTokenEnds : tokenDialog.withItsTokenThe}</p>
           {operating && logger.hasToken && (
             <Field
-              label="Why"
+              label={tokenDialog.why}
               name="reason"
               value={reason}
               onChange={(e) => setReason(e.target.value)}
               error={make.error instanceof ApiError ? (make.error.fault('reason') ?? null) : null}
-              hint="A few words; they stay in the history."
+              hint={tokenDialog.aFewWordsThey}
             />
           )}
           {make.error && (
             <div className="mt-3">
-              <Notice kind="failed" title="No token was made">
+              <Notice kind="failed" title={tokenDialog.noTokenWasMade}>
                 {make.error.message}
               </Notice>
             </div>
           )}
           <Button weight="primary" className="mt-4" onClick={() => make.mutate()} disabled={make.isPending}>
-            {make.isPending ? 'Making …' : 'Make the token'}
+            {make.isPending ? tokenDialog.making : tokenDialog.makeTheToken}
           </Button>
         </>
       ) : (

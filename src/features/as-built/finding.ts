@@ -1,7 +1,8 @@
 import { reports, type PartKind } from '../../domain/commissioning/as-built/parts';
-import { counted, number } from '../../drawings/numbers';
+import { number } from '../../drawings/numbers';
 import type { AsBuilt, AsBuiltView, StringBuilt } from '../../schemas/api/as-built';
 import { nameOf } from '../../schemas/as-built-values';
+import { asBuiltFindingWords } from '../../words/as-built';
 
 export const gapsOf = (string: StringBuilt): number => string.slots.filter((s) => s.serial === null).length;
 
@@ -11,34 +12,31 @@ export function asBuiltFinding(built: Omit<AsBuilt, 'at'>): { heading: string; s
   if (strings.length === 0) {
     const missing = missingForStrings(built);
     return {
-      heading: 'No strings are drawn yet',
+      heading: asBuiltFindingWords.noStringsAreDrawn,
       sentence:
         missing.length > 0
-          ? `Before a string can be entered, this site needs ${listed(missing.map((m) => m.words))}.`
-          : 'Add strings here, or read them from a file.',
+          ? asBuiltFindingWords.beforeStringCanBe(listed(missing.map((m) => m.words)))
+          : asBuiltFindingWords.addStringsHereOr,
     };
   }
   const slots = strings.reduce((sum, s) => sum + s.slots.length, 0);
   const gaps = strings.reduce((sum, s) => sum + gapsOf(s), 0);
-  const heading = `${counted(strings.length, 'string')}, ${counted(slots, 'slot')}; ${
+  const heading = `${asBuiltFindingWords.countedStringsString(strings.length)}, ${asBuiltFindingWords.countedSlotsSlot(slots)}; ${
     gaps === 0
-      ? 'every slot has a serial'
+      ? asBuiltFindingWords.everySlotHasA
       : gaps === slots
-        ? 'no slot has a serial yet'
-        : `${number(gaps)} ${gaps === 1 ? 'slot has' : 'slots have'} no serial`
+        ? asBuiltFindingWords.noSlotHasA
+        : asBuiltFindingWords.noSerial(gaps)
   }`;
   const mute = built.loggers.filter((l) => l.tokenAt === null);
   if (mute.length > 0)
     return {
       heading,
-      sentence: `Logger ${mute.map((l) => l.serial).join(', ')} has no token and cannot report. Make one.`,
+      sentence: asBuiltFindingWords.loggerHasNoToken(mute.map((l) => l.serial).join(', ')),
     };
   return {
     heading,
-    sentence:
-      gaps > 0
-        ? 'A unit whose serial is not here is heard at the roll call as unknown. Type them, read them on site, or take them from a file.'
-        : 'Go on with the design checks, then with the roll call.',
+    sentence: gaps > 0 ? asBuiltFindingWords.aUnitWhoseSerial : asBuiltFindingWords.goOnWithThe,
   };
 }
 
@@ -52,24 +50,27 @@ export interface Missing {
 export function missingForStrings(built: Omit<AsBuilt, 'at'>): Missing[] {
   const { unitTypes, moduleTypes } = built.catalogue;
   const needs: Missing[] = [];
-  if (!unitTypes.some((t) => !t.archived)) needs.push({ words: 'a unit type in the catalogue', add: [] });
-  if (!moduleTypes.some((t) => !t.archived)) needs.push({ words: 'a module type in the catalogue', add: [] });
-  if (built.planes.length === 0) needs.push({ words: 'a plane', add: ['plane'] });
-  if (built.inverters.length === 0) needs.push({ words: 'an inverter', add: ['inverter'] });
-  if (built.zones.length === 0) needs.push({ words: 'a zone', add: ['zone'] });
+  if (!unitTypes.some((t) => !t.archived)) needs.push({ words: asBuiltFindingWords.aUnitTypeIn, add: [] });
+  if (!moduleTypes.some((t) => !t.archived))
+    needs.push({ words: asBuiltFindingWords.aModuleTypeIn, add: [] });
+  if (built.planes.length === 0) needs.push({ words: asBuiltFindingWords.aPlane, add: ['plane'] });
+  if (built.inverters.length === 0) needs.push({ words: asBuiltFindingWords.anInverter, add: ['inverter'] });
+  if (built.zones.length === 0) needs.push({ words: asBuiltFindingWords.aZone, add: ['zone'] });
   const kinds = unitTypes.filter((t) => !t.archived).map((t) => t.kind);
   const onlyMute = kinds.length > 0 && kinds.every((k) => !reports(k));
   if (built.loggers.length === 0 && built.transmitters.length === 0)
     needs.push(
       onlyMute
-        ? { words: 'a transmitter', add: ['transmitter'] }
-        : { words: 'a logger or a transmitter', add: ['logger', 'transmitter'] },
+        ? { words: asBuiltFindingWords.aTransmitter, add: ['transmitter'] }
+        : { words: asBuiltFindingWords.aLoggerOrA, add: ['logger', 'transmitter'] },
     );
   return needs;
 }
 
 export const listed = (words: readonly string[]): string =>
-  words.length < 2 ? words.join('') : `${words.slice(0, -1).join(', ')} and ${words.at(-1) ?? ''}`;
+  words.length < 2
+    ? words.join('')
+    : asBuiltFindingWords.wordsAndAt(words.slice(0, -1).join(', '), words.at(-1));
 
 const byName = new Intl.Collator('en', { numeric: true, sensitivity: 'base' });
 

@@ -4,11 +4,11 @@ import { Notice } from '../../components/ui/Notice';
 import { SearchInput } from '../../components/ui/SearchInput';
 import { Sheet } from '../../components/ui/Sheet';
 import { SiteTime } from '../../components/ui/Time';
-import { counted } from '../../drawings/numbers';
 import { withQuery } from '../../lib/api';
 import { AUDIT_AREAS, type AuditItem, type AuditPage, type AuditView } from '../../schemas/api/audit';
 import { paths } from '../../schemas/paths';
 import { actionWords, AREA_WORDS, changesOf, subjectWords } from './words';
+import { auditList } from '../../words/audit';
 
 /** The fields of an entry that are seen at once. */
 const SHOWN_CHANGES = 4;
@@ -43,7 +43,7 @@ function Entry({ item, at, timeZone }: { item: AuditItem; at: string; timeZone: 
     <li className="grid gap-x-6 gap-y-1 py-3 lg:grid-cols-[170px_minmax(0,1fr)_minmax(0,1.2fr)]">
       <p className="text-sm text-ink-2">
         <SiteTime at={item.at} now={at} timeZone={timeZone} zone />
-        {item.address && <span className="block">from {item.address}</span>}
+        {item.address && <span className="block">{auditList.fromAddress(item.address)}</span>}
       </p>
       <div className="min-w-0">
         <p>
@@ -66,7 +66,7 @@ function Entry({ item, at, timeZone }: { item: AuditItem; at: string; timeZone: 
           {changes.length > SHOWN_CHANGES && (
             <details>
               <summary className="target flex cursor-pointer items-center text-ink-2">
-                {counted(changes.length - SHOWN_CHANGES, 'more field')}
+                {auditList.countedChangesSHOWNCHANGES(changes.length, SHOWN_CHANGES)}
               </summary>
               <Changes changes={changes.slice(SHOWN_CHANGES)} />
             </details>
@@ -85,22 +85,22 @@ export function AuditList({ page, view, timeZone }: { page: AuditPage; view: Aud
       <form action={paths.audit()} className="no-print mb-4 flex flex-wrap items-center gap-x-3 gap-y-2">
         <SearchInput
           name="q"
-          label="Find a person, site, serial or reason"
-          placeholder="Person, site, serial or reason"
+          label={auditList.findAPersonSite}
+          placeholder={auditList.personSiteSerialOr}
           defaultValue={view.q}
           className="sm:w-[280px]"
         />
         <Choice
           inline
-          label="About"
+          label={auditList.about}
           name="area"
           defaultValue={view.area}
           options={[
-            { value: 'all', label: 'everything' },
+            { value: 'all', label: auditList.everything },
             ...AUDIT_AREAS.map((area) => ({ value: area, label: AREA_WORDS[area] })),
           ]}
         />
-        <Button type="submit">Find</Button>
+        <Button type="submit">{auditList.find}</Button>
         <ButtonLink href={withQuery(paths.api.auditCsv(), filters)} className="sm:ml-auto">
           CSV
         </ButtonLink>
@@ -108,12 +108,12 @@ export function AuditList({ page, view, timeZone }: { page: AuditPage; view: Aud
       {page.items.length === 0 ? (
         <Notice
           kind="empty"
-          title={view.q || view.area !== 'all' ? 'Nothing fits' : 'Nothing is on record yet'}
+          title={view.q || view.area !== 'all' ? auditList.nothingFits : auditList.nothingIsOnRecord}
         >
-          {view.q || view.area !== 'all' ? 'Use fewer words, or look at everything.' : ''}
+          {view.q || view.area !== 'all' ? auditList.useFewerWordsOr : ''}
         </Notice>
       ) : (
-        <Sheet id="entries" title="On record">
+        <Sheet id="entries" title={auditList.onRecord}>
           <ul className="divide-y divide-rule-faint">
             {page.items.map((item) => (
               <Entry key={item.id} item={item} at={page.at} timeZone={timeZone} />
@@ -121,7 +121,7 @@ export function AuditList({ page, view, timeZone }: { page: AuditPage; view: Aud
           </ul>
           {page.next !== null && (
             <ButtonLink href={withQuery(paths.audit(), { ...filters, before: page.next })} className="mt-3">
-              Older
+              {auditList.older}
             </ButtonLink>
           )}
         </Sheet>

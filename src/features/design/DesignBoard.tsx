@@ -6,7 +6,6 @@ import { Notice } from '../../components/ui/Notice';
 import { SearchInput } from '../../components/ui/SearchInput';
 import { Segmented } from '../../components/ui/Segmented';
 import { Sheet } from '../../components/ui/Sheet';
-import { number } from '../../drawings/numbers';
 import { withQuery } from '../../lib/api';
 import { useViewInUrl } from '../../lib/view-in-url';
 import type { DesignView, SiteDesign } from '../../schemas/api/design';
@@ -15,6 +14,7 @@ import { FindingsTable } from './FindingsTable';
 import { InputsSheet } from './InputsSheet';
 import { DESIGN_DEFAULTS, shownFindings } from './list';
 import { designFinding, mayNotShutDown, stringsInShort } from './words';
+import { designBoard } from '../../words/design';
 
 interface Props {
   design: SiteDesign;
@@ -22,12 +22,12 @@ interface Props {
 }
 
 const SHOWS = [
-  { value: 'open', label: 'Open' },
-  { value: 'exceeded', label: 'Exceeded' },
-  { value: 'cannot_tell', label: 'Can’t tell' },
-  { value: 'within', label: 'Within' },
-  { value: 'not_required', label: 'Not required' },
-  { value: 'all', label: 'All' },
+  { value: 'open', label: designBoard.open },
+  { value: 'exceeded', label: designBoard.exceeded },
+  { value: 'cannot_tell', label: designBoard.cantTell },
+  { value: 'within', label: designBoard.within },
+  { value: 'not_required', label: designBoard.notRequired },
+  { value: 'all', label: designBoard.all },
 ] as const;
 
 /** Every design check of a site: exceeded first, each with its figure, clause and remedy, and what it was made with. */
@@ -40,35 +40,34 @@ export function DesignBoard({ design, view: initialView }: Props) {
     <>
       <Heading
         crumbs={[
-          { label: 'Commissioning', href: paths.commissioning() },
+          { label: designBoard.commissioning, href: paths.commissioning() },
           { label: design.siteName, href: paths.commissioningSite(design.siteId) },
-          { label: 'Design checks' },
+          { label: designBoard.designChecks },
         ]}
         finding={heading}
         sentence={sentence}
-        actions={<ButtonLink href={paths.asBuilt(design.siteId)}>To the as-built</ButtonLink>}
+        actions={<ButtonLink href={paths.asBuilt(design.siteId)}>{designBoard.toTheAsBuilt}</ButtonLink>}
       />
       {live.length > 0 && (
         <div className="mb-5">
-          <Caution strong={`Treat ${stringsInShort(live)} as live after a shutdown.`}>
-            By what is entered they may not shut down as the rule set asks. Shutdown is not isolation in any
-            case: each module and its leads stay at module voltage.
+          <Caution strong={designBoard.treatAsLiveAfter(stringsInShort(live))}>
+            {designBoard.byWhatIsEntered}
           </Caution>
         </div>
       )}
       {design.stringsWithoutSlots.length > 0 && (
         <div className="mb-5">
-          <Notice kind="stale" title={`Not checked: ${design.stringsWithoutSlots.join(', ')}`}>
-            They have no slot yet.
+          <Notice kind="stale" title={designBoard.notChecked(design.stringsWithoutSlots.join(', '))}>
+            {designBoard.theyHaveNoSlot}
           </Notice>
         </div>
       )}
       <div className="grid gap-5">
         <Sheet
           flush
-          title="Checks"
+          title={designBoard.checks}
           id="checks"
-          aside={`${number(rows.length)} of ${number(design.findings.length)}`}
+          aside={designBoard.rowsOfFindings(rows.length, design.findings.length)}
         >
           <form
             action={paths.designChecks(design.siteId)}
@@ -77,13 +76,13 @@ export function DesignBoard({ design, view: initialView }: Props) {
           >
             <SearchInput
               name="q"
-              label="Filter checks by string, clause or word"
-              placeholder="String, clause or word"
+              label={designBoard.filterChecksByString}
+              placeholder={designBoard.stringClauseOrWord}
               value={view.q}
               onChange={(typed) => change({ q: typed }, 'typed')}
             />
             <Segmented
-              label="Which outcomes"
+              label={designBoard.whichOutcomes}
               name="show"
               options={SHOWS}
               value={view.show}
@@ -105,22 +104,30 @@ export function DesignBoard({ design, view: initialView }: Props) {
               design.strings === 0 ? (
                 <Notice
                   kind="empty"
-                  title="No string is drawn yet"
-                  action={<ButtonLink href={paths.asBuilt(design.siteId)}>Draw the strings</ButtonLink>}
+                  title={designBoard.noStringIsDrawn}
+                  action={
+                    <ButtonLink href={paths.asBuilt(design.siteId)}>{designBoard.drawTheStrings}</ButtonLink>
+                  }
                 >
-                  Each is checked as soon as it has its slots.
+                  {designBoard.eachIsCheckedAs}
                 </Notice>
               ) : view.show === 'open' && view.q === '' ? (
                 <Notice
                   kind="done"
-                  title="Nothing is exceeded and nothing is left untold"
-                  action={<Button onClick={() => change({ show: 'all' })}>Show all checks</Button>}
+                  title={designBoard.nothingIsExceededAnd}
+                  action={
+                    <Button onClick={() => change({ show: 'all' })}>{designBoard.showAllChecks}</Button>
+                  }
                 />
               ) : (
                 <Notice
                   kind="empty"
-                  title="No check matches"
-                  action={<Button onClick={() => change({ q: '', show: 'all' })}>Show all checks</Button>}
+                  title={designBoard.noCheckMatches}
+                  action={
+                    <Button onClick={() => change({ q: '', show: 'all' })}>
+                      {designBoard.showAllChecks}
+                    </Button>
+                  }
                 />
               )
             }

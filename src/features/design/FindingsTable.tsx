@@ -4,6 +4,7 @@ import { Tag, type Tone } from '../../components/ui/Tag';
 import { number, quantity } from '../../drawings/numbers';
 import type { DesignView, SiteDesignItem } from '../../schemas/api/design';
 import { CHECK_WORDS, OUTCOME_WORDS, stringsInShort } from './words';
+import { findingsTable } from '../../words/design';
 
 interface Props {
   rows: readonly SiteDesignItem[];
@@ -27,7 +28,7 @@ function figure(value: number | null, unit: SiteDesignItem['unit']): string {
 const COLUMNS: Column<SiteDesignItem>[] = [
   {
     key: 'gravity',
-    label: 'Outcome',
+    label: findingsTable.outcome,
     sortable: true,
     from: 'md',
     className: '!align-top',
@@ -35,7 +36,7 @@ const COLUMNS: Column<SiteDesignItem>[] = [
   },
   {
     key: 'check',
-    label: 'Check',
+    label: findingsTable.check,
     sortable: true,
     className: '!align-top',
     cell: (f) => (
@@ -47,7 +48,8 @@ const COLUMNS: Column<SiteDesignItem>[] = [
         <p className="text-sm text-ink-2">{stringsInShort(f.strings)}</p>
         {f.limit !== null && (
           <p className="sm:hidden">
-            {figure(f.value, f.unit)} <span className="text-ink-2">against {figure(f.limit, f.unit)}</span>
+            {figure(f.value, f.unit)}{' '}
+            <span className="text-ink-2">{findingsTable.againstLimit(figure(f.limit, f.unit))}</span>
           </p>
         )}
         <div className="mt-1 lg:hidden">
@@ -58,7 +60,7 @@ const COLUMNS: Column<SiteDesignItem>[] = [
   },
   {
     key: 'strings',
-    label: 'Strings',
+    label: findingsTable.strings,
     numeric: true,
     sortable: true,
     from: 'lg',
@@ -67,7 +69,7 @@ const COLUMNS: Column<SiteDesignItem>[] = [
   },
   {
     key: 'value',
-    label: 'Figure',
+    label: findingsTable.figure,
     numeric: true,
     from: 'sm',
     className: '!align-top',
@@ -75,7 +77,7 @@ const COLUMNS: Column<SiteDesignItem>[] = [
   },
   {
     key: 'limit',
-    label: 'Limit',
+    label: findingsTable.limit,
     numeric: true,
     from: 'sm',
     className: '!align-top',
@@ -83,7 +85,7 @@ const COLUMNS: Column<SiteDesignItem>[] = [
   },
   {
     key: 'found',
-    label: 'What was found, and what to do',
+    label: findingsTable.whatWasFoundAnd,
     from: 'lg',
     className: '!align-top max-w-[620px]',
     cell: (f) => <Found finding={f} />,
@@ -105,12 +107,14 @@ function Found({ finding }: { finding: SiteDesignItem }) {
       <p>{finding.words}</p>
       {finding.remedy && (
         <p className="mt-1">
-          <span className="font-medium">To do: </span>
+          <span className="font-medium">{findingsTable.toDo}</span>
           {finding.remedy}
         </p>
       )}
       {finding.alternatives.length > 0 && (
-        <p className="mt-1 text-sm text-ink-2">Or: {finding.alternatives.join(' Or: ')}</p>
+        <p className="mt-1 text-sm text-ink-2">
+          {findingsTable.orAlternatives(finding.alternatives.join(' Or: '))}
+        </p>
       )}
       <p className="mt-1 text-sm text-ink-2">{finding.clause}</p>
     </>
@@ -121,7 +125,7 @@ function Found({ finding }: { finding: SiteDesignItem }) {
 export function FindingsTable({ rows, view, onChange, empty }: Props) {
   return (
     <Table
-      caption="Design checks with outcome, strings, figure, limit, clause and remedy"
+      caption={findingsTable.designChecksWithOutcome}
       columns={COLUMNS}
       rows={rows}
       rowKey={(f) => `${f.key} ${f.words}`}

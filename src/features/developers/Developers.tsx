@@ -5,6 +5,7 @@ import { useViewInUrl } from '../../lib/view-in-url';
 import type { OperationShown } from '../../schemas/api/developers';
 import { groupsOf, operationsFound } from './search';
 import { OperationSheet } from './OperationSheet';
+import { developers } from '../../words/developers';
 
 type View = Pick<Props, 'q'>;
 const DEFAULTS: View = { q: '' };
@@ -26,30 +27,30 @@ export function Developers({ operations, q }: Props) {
     <>
       <form
         role="search"
-        aria-label="Operations"
+        aria-label={developers.operations}
         className="no-print mb-4 flex flex-wrap items-center gap-x-4 gap-y-2"
         onSubmit={(event) => event.preventDefault()}
       >
         <SearchInput
-          label="Find an operation, a parameter or a field"
+          label={developers.findAnOperationA}
           value={view.q}
           onChange={(typed) => setView({ q: typed }, 'typed')}
           className="sm:w-[360px]"
         />
         <span className="text-sm text-ink-2" role="status">
-          {view.q && `${shown.length} of ${operations.length} operations`}
+          {view.q && developers.ofOperations(shown.length, operations.length)}
         </span>
         <span className="sr-only" role="status">
           {said}
         </span>
       </form>
       {shown.length === 0 && (
-        <Notice kind="empty" title={`Nothing here has “${view.q}” in it`}>
-          Search for a thing (unit, event), a parameter (cursor) or a field (voltage).
+        <Notice kind="empty" title={developers.nothingHereHasIn(view.q)}>
+          {developers.searchForAThing}
         </Notice>
       )}
       <div className="lg:grid lg:grid-cols-[220px_minmax(0,1fr)] lg:gap-8">
-        <nav aria-label="Operations" className="hidden lg:block">
+        <nav aria-label={developers.operations} className="hidden lg:block">
           <ul className="sticky top-4 max-h-[calc(100vh-32px)] overflow-y-auto pb-4">
             {groups.map(({ group, operations: of }) => (
               <li key={group} className="mb-3">
@@ -76,7 +77,7 @@ export function Developers({ operations, q }: Props) {
                   <OperationSheet
                     key={o.id}
                     operation={o}
-                    onCopied={() => setSaid(`The example of ${o.path} is on your clipboard.`)}
+                    onCopied={() => setSaid(developers.theExampleOfIs(o.path))}
                   />
                 ))}
               </div>

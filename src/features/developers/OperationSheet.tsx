@@ -3,6 +3,7 @@ import { Button } from '../../components/ui/Button';
 import { Fold } from '../../components/ui/Fold';
 import { Sheet } from '../../components/ui/Sheet';
 import type { FieldShown, OperationShown } from '../../schemas/api/developers';
+import { operationSheet } from '../../words/developers';
 
 /** `code` in a description stands in the text of the document as Markdown. */
 function Words({ text }: { text: string }) {
@@ -41,10 +42,11 @@ export function OperationSheet({
       aside={
         o.scope ? (
           <>
-            scope <code className="font-mono">{o.scope}</code>
+            {operationSheet.scope}
+            <code className="font-mono">{o.scope}</code>
           </>
         ) : (
-          'any token'
+          operationSheet.anyToken
         )
       }
     >
@@ -53,8 +55,12 @@ export function OperationSheet({
         <Words text={o.words} />
       </p>
       <Example curl={o.curl} id={o.id} onCopied={onCopied} />
-      {o.takes.length > 0 && <Fields title="It takes" fields={o.takes} />}
-      <Fold title="It answers" opens={o.answers.map((a) => a.status).join(', ')} className="mt-4">
+      {o.takes.length > 0 && <Fields title={operationSheet.itTakes} fields={o.takes} />}
+      <Fold
+        title={operationSheet.itAnswers}
+        opens={o.answers.map((a) => a.status).join(', ')}
+        className="mt-4"
+      >
         <dl className="pb-3">
           {o.answers.map((a) => (
             <div key={a.status} className="py-1.5 sm:flex sm:gap-4">
@@ -62,7 +68,7 @@ export function OperationSheet({
               <dd className="min-w-0 flex-1">
                 <Words text={a.words} />
                 {a.type && <span className="block text-sm text-ink-2">{a.type}</span>}
-                {a.fields.length > 0 && <Fields title="Fields" fields={a.fields} />}
+                {a.fields.length > 0 && <Fields title={operationSheet.fields} fields={a.fields} />}
               </dd>
             </div>
           ))}
@@ -87,7 +93,7 @@ function Fields({ title, fields }: { title: string; fields: readonly FieldShown[
               {(f.where || f.required) && (
                 <span className="ml-2 text-sm text-ink-2">
                   {f.where}
-                  {f.where && f.required && ', needed'}
+                  {f.where && f.required && operationSheet.needed}
                 </span>
               )}
             </p>
@@ -113,7 +119,7 @@ function Example({ curl, id, onCopied }: { curl: string; id: string; onCopied: (
       <pre
         data-example={id}
         tabIndex={0}
-        aria-label="Example for a shell"
+        aria-label={operationSheet.exampleForAShell}
         className="whitespace-pre-wrap border border-rule bg-film px-3 py-2.5 font-mono text-[13px] leading-5 [overflow-wrap:anywhere]"
       >
         {curl}
@@ -130,7 +136,7 @@ function Example({ curl, id, onCopied }: { curl: string; id: string; onCopied: (
           );
         }}
       >
-        {copied ? 'Copied' : 'Copy the example'}
+        {copied ? operationSheet.copied : operationSheet.copyTheExample}
       </Button>
     </div>
   );

@@ -12,19 +12,20 @@ import {
   type ModuleLine,
 } from '../../drawings/module-curve';
 import { ModuleCurve } from '../../drawings/ModuleCurve';
-import { irradiance, number, percent, power, celsius } from '../../drawings/numbers';
+import { irradiance, percent, power, celsius } from '../../drawings/numbers';
 import { CURVE_KEYS, curveEntry, curveMissing, type FormReading } from './form';
 import { fitOf, type FitLine, type ModuleFit } from './fit';
+import { curveSheet } from '../../words/equipment';
 
 const SWEEPS = [
-  { value: 'light', label: 'Less light' },
-  { value: 'temperature', label: 'Warmer cells' },
+  { value: 'light', label: curveSheet.lessLight },
+  { value: 'temperature', label: curveSheet.warmerCells },
 ] as const;
 const VERDICT = {
-  good: { tone: 'petrol', shape: '✓', word: 'Fits well' },
-  remarked: { tone: 'rust', shape: '≠', word: 'Points fit, coefficients don’t' },
-  fair: { tone: 'petrol', shape: '≈', word: 'Fits' },
-  poor: { tone: 'rust', shape: '×', word: 'Does not fit' },
+  good: { tone: 'petrol', shape: '✓', word: curveSheet.fitsWell },
+  remarked: { tone: 'rust', shape: '≠', word: curveSheet.pointsFitCoefficientsDont },
+  fair: { tone: 'petrol', shape: '≈', word: curveSheet.fits },
+  poor: { tone: 'rust', shape: '×', word: curveSheet.doesNotFit },
 } as const;
 
 const labelOf = (sweep: CurveSweep) => (line: ModuleLine) =>
@@ -57,11 +58,11 @@ export function CurveSheet({ reading }: { reading: FormReading }) {
   );
   if (!fit)
     return (
-      <Sheet title="The curve of this sheet" id="curve" className="lg:sticky lg:top-4">
-        <Notice kind="empty" title="The curve appears when its figures are there">
+      <Sheet title={curveSheet.theCurveOfThis} id="curve" className="lg:sticky lg:top-4">
+        <Notice kind="empty" title={curveSheet.theCurveAppearsWhen}>
           {curveMissing(reading) > 0
-            ? `${curveMissing(reading)} of ${CURVE_KEYS.length} to go: the four points, the three coefficients, cells, bypass groups and the operating temperature.`
-            : 'The points can’t be of one module: see the marked field.'}
+            ? curveSheet.ofToGoThe(curveMissing(reading), CURVE_KEYS.length)
+            : curveSheet.thePointsCantBe}
         </Notice>
       </Sheet>
     );
@@ -70,7 +71,7 @@ export function CurveSheet({ reading }: { reading: FormReading }) {
   const main = lines.find(isMain);
   return (
     <Sheet
-      title="The curve of this sheet"
+      title={curveSheet.theCurveOfThis}
       id="curve"
       className="lg:sticky lg:top-4"
       aside={
@@ -89,7 +90,13 @@ export function CurveSheet({ reading }: { reading: FormReading }) {
           ))}
         </ul>
       )}
-      <Segmented label="Conditions" name="conditions" options={SWEEPS} value={sweep} onChange={setSweep} />
+      <Segmented
+        label={curveSheet.conditions}
+        name="conditions"
+        options={SWEEPS}
+        value={sweep}
+        onChange={setSweep}
+      />
       {PLOTS.map(({ show, heights }) =>
         WIDTHS.map(({ width, className }, i) => (
           <div key={`${show} ${width}`} className={className}>
@@ -106,24 +113,24 @@ export function CurveSheet({ reading }: { reading: FormReading }) {
               height={heights[i] ?? 260}
               label={
                 show === 'current'
-                  ? `Current over voltage, ${sweep === 'light' ? 'at 1000 to 200 W/m² and 25 °C' : 'at 0 to 75 °C and 1000 W/m²'}; rings are the datasheet’s points`
-                  : `Power over voltage under the same conditions${main ? `; ${power(main.pmp)} at STC` : ''}`
+                  ? curveSheet.currentOverVoltageRings(sweep)
+                  : curveSheet.powerOverVoltageUnder(main ? `; ${power(main.pmp)} at STC` : '')
               }
             />
           </div>
         )),
       )}
       <Table
-        caption="Each printed figure beside the one that the curve has"
+        caption={curveSheet.eachPrintedFigureBeside}
         rows={fit.lines}
         rowKey={(line) => line.label}
         columns={[
-          { key: 'label', label: 'Figure', cell: (line) => line.label },
-          { key: 'printed', label: 'Sheet', numeric: true, cell: (line) => line.printed },
-          { key: 'fitted', label: 'Curve', numeric: true, cell: (line) => line.fitted },
+          { key: 'label', label: curveSheet.figure, cell: (line) => line.label },
+          { key: 'printed', label: curveSheet.sheet, numeric: true, cell: (line) => line.printed },
+          { key: 'fitted', label: curveSheet.curve, numeric: true, cell: (line) => line.fitted },
           {
             key: 'off',
-            label: 'Off by',
+            label: curveSheet.offBy,
             numeric: true,
             cell: (line) => (
               <span className={standsOut(line) ? 'font-semibold text-rust-ink' : ''}>
@@ -134,16 +141,18 @@ export function CurveSheet({ reading }: { reading: FormReading }) {
           },
           {
             key: 'role',
-            label: 'How',
+            label: curveSheet.how,
             from: 'sm',
             cell: (line) => <span className="text-ink-2">{line.role}</span>,
           },
         ]}
       />
       <p className="mt-3 text-sm text-ink-2">
-        Single-diode model (De Soto 2006) from the sheet alone: ideality {number(fit.fitted.fit.ideality, 2)},
-        series resistance {number(fit.fitted.parameters.resistanceSeries, 2)} Ω, shunt{' '}
-        {number(fit.fitted.parameters.resistanceShuntRef)} Ω. Rings: the sheet’s points.
+        {curveSheet.singleDiodeModelDe(
+          fit.fitted.fit.ideality,
+          fit.fitted.parameters.resistanceSeries,
+          fit.fitted.parameters.resistanceShuntRef,
+        )}
       </p>
     </Sheet>
   );

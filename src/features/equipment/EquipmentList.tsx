@@ -7,7 +7,6 @@ import { Segmented } from '../../components/ui/Segmented';
 import { Sheet } from '../../components/ui/Sheet';
 import { Table } from '../../components/ui/Table';
 import { EQUIPMENT_FAMILIES } from '../../domain/equipment/families';
-import { number } from '../../drawings/numbers';
 import { withQuery } from '../../lib/api';
 import { useViewInUrl } from '../../lib/view-in-url';
 import type { Catalogue, EquipmentView } from '../../schemas/api/equipment';
@@ -15,6 +14,7 @@ import { paths } from '../../schemas/paths';
 import { EQUIPMENT_DEFAULTS, shownItems } from './list';
 import { listColumns } from './list-columns';
 import { FAMILY_LABELS, ONE, listFinding } from './words';
+import { equipmentListWords } from '../../words/equipment';
 
 interface Props {
   catalogue: Catalogue;
@@ -24,14 +24,14 @@ interface Props {
 }
 
 const SHOWS = [
-  { value: 'in_use', label: 'Current' },
-  { value: 'archived', label: 'Archived' },
-  { value: 'all', label: 'All' },
+  { value: 'in_use', label: equipmentListWords.current },
+  { value: 'archived', label: equipmentListWords.archived },
+  { value: 'all', label: equipmentListWords.all },
 ] as const;
 
 export function FamilyNav({ current }: { current: Catalogue['family'] }) {
   return (
-    <nav aria-label="Families of equipment" className="mb-5 border-b border-rule">
+    <nav aria-label={equipmentListWords.familiesOfEquipment} className="mb-5 border-b border-rule">
       <ul className="flex flex-wrap gap-x-5">
         {EQUIPMENT_FAMILIES.map((family) => (
           <li key={family}>
@@ -66,9 +66,9 @@ export function EquipmentList({ catalogue, view: initialView, mayWrite, children
           mayWrite && (
             <>
               <ButtonLink weight="primary" href={paths.equipmentNew(family)}>
-                Enter {family === 'inverters' ? 'an' : 'a'} {ONE[family]}
+                {equipmentListWords.enterFamilyFamily(family, ONE[family])}
               </ButtonLink>
-              <ButtonLink href={paths.equipmentImport(family)}>Import a file</ButtonLink>
+              <ButtonLink href={paths.equipmentImport(family)}>{equipmentListWords.importAFile}</ButtonLink>
             </>
           )
         }
@@ -77,7 +77,7 @@ export function EquipmentList({ catalogue, view: initialView, mayWrite, children
         flush
         title={FAMILY_LABELS[family]}
         id="types"
-        aside={`${number(rows.length)} of ${number(catalogue.items.length)}`}
+        aside={equipmentListWords.rowsOfItems(rows.length, catalogue.items.length)}
       >
         <form
           action={paths.equipmentList(family)}
@@ -86,13 +86,13 @@ export function EquipmentList({ catalogue, view: initialView, mayWrite, children
         >
           <SearchInput
             name="q"
-            label={`Filter ${FAMILY_LABELS[family].toLowerCase()} by name`}
-            placeholder="Filter by name"
+            label={equipmentListWords.filterByName(FAMILY_LABELS[family])}
+            placeholder={equipmentListWords.filterByName2}
             value={view.q}
             onChange={(typed) => change({ q: typed }, 'typed')}
           />
           <Segmented
-            label="Archived types"
+            label={equipmentListWords.archivedTypes}
             name="show"
             options={SHOWS}
             value={view.show}
@@ -107,7 +107,7 @@ export function EquipmentList({ catalogue, view: initialView, mayWrite, children
           </ButtonLink>
         </form>
         <Table
-          caption={`${FAMILY_LABELS[family]} of the catalogue with their main figures and use`}
+          caption={equipmentListWords.ofTheCatalogueWith(FAMILY_LABELS[family])}
           columns={columns}
           rows={rows}
           rowKey={(row) => row.id}
@@ -117,16 +117,22 @@ export function EquipmentList({ catalogue, view: initialView, mayWrite, children
             <div className="py-3">
               <Notice
                 kind="empty"
-                title={catalogue.items.length === 0 ? `No ${ONE[family]} yet` : `No ${ONE[family]} matches`}
+                title={
+                  catalogue.items.length === 0
+                    ? equipmentListWords.noYet(ONE[family])
+                    : equipmentListWords.noMatches(ONE[family])
+                }
                 action={
                   catalogue.items.length > 0 && (
-                    <Button onClick={() => change({ q: '', show: 'all' })}>Show all</Button>
+                    <Button onClick={() => change({ q: '', show: 'all' })}>
+                      {equipmentListWords.showAll}
+                    </Button>
                   )
                 }
               >
                 {catalogue.items.length === 0
-                  ? 'Enter the first, or import a file.'
-                  : 'Another word may, or look among the archived.'}
+                  ? equipmentListWords.enterTheFirstOr
+                  : equipmentListWords.anotherWordMayOr}
               </Notice>
             </div>
           }

@@ -2,6 +2,7 @@ import { Choice } from '../../components/ui/Choice';
 import { Field as TextInput } from '../../components/ui/Field';
 import type { Field } from '../../domain/equipment/fields';
 import type { ConnectorItem } from '../../schemas/api/equipment';
+import { formField } from '../../words/equipment';
 
 interface Props {
   field: Field;
@@ -16,16 +17,14 @@ interface Props {
 }
 
 const range = (field: Extract<Field, { kind: 'number' }>): string =>
-  `${field.min} to ${field.max}${field.unit ? ` ${field.unit}` : ''}`.replaceAll('-', '−');
+  formField.minToMaxUnit(field.min, field.max, field.unit).replaceAll('-', '−');
 
 /** One field of a type's form, by what its table says. */
 export function FormField({ field, value, error, theirs, connectors, disabled, onChange, onLeave }: Props) {
   const hint = (
     <>
       {field.hint ?? (field.kind === 'number' ? range(field) : null)}
-      {theirs !== null && (
-        <strong className="block text-ink">Saved by somebody else: {theirs || 'empty'}</strong>
-      )}
+      {theirs !== null && <strong className="block text-ink">{formField.savedBySomebodyElse(theirs)}</strong>}
     </>
   );
   const shared = { label: field.label, error, hint, disabled, onBlur: onLeave, 'data-field': field.key };
@@ -58,10 +57,10 @@ export function FormField({ field, value, error, theirs, connectors, disabled, o
         <Choice
           {...shared}
           options={[
-            { value: '', label: 'Not entered' },
+            { value: '', label: formField.notEntered },
             ...connectors
               .filter((c) => !c.archived || c.id === value)
-              .map((c) => ({ value: c.id, label: c.archived ? `${c.name} (archived)` : c.name })),
+              .map((c) => ({ value: c.id, label: c.archived ? formField.nameArchived(c.name) : c.name })),
           ]}
           value={value}
           onChange={onChange}

@@ -6,12 +6,12 @@ import { Sheet } from '../../components/ui/Sheet';
 import type { EquipmentFamily } from '../../domain/equipment/families';
 import { headerOf } from '../../domain/equipment/fields';
 import { FIELDS } from '../../domain/equipment/plausibility';
-import { counted, countAtStart } from '../../drawings/numbers';
 import { ApiError, api } from '../../lib/api';
 import type { ImportPreview } from '../../schemas/api/equipment';
 import { paths } from '../../schemas/paths';
 import { PreviewSheet } from './PreviewSheet';
 import { FAMILY_LABELS, ONE } from './words';
+import { importPage } from '../../words/equipment-import';
 
 const MOST_BYTES = 200_000;
 
@@ -25,34 +25,33 @@ function finding(family: EquipmentFamily, state: Step): { heading: string; sente
   const one = ONE[family];
   if (!('preview' in state))
     return {
-      heading: `Import ${one}s from a file`,
-      sentence:
-        'The first row names the columns. Every row is looked at before anything is written: all of it is imported, or nothing.',
+      heading: importPage.importFromFile(one),
+      sentence: importPage.theFirstRowNames,
     };
   const { counts, headerFaults } = state.preview;
   if (state.step === 'imported')
     return {
-      heading: `${countAtStart(counts.new)} new, ${counts.changed} changed`,
-      sentence: `${counted(counts.unchanged, 'row')} said what the catalogue says already. The same file once more would change nothing.`,
+      heading: importPage.newChanged(counts.new, counts.changed),
+      sentence: importPage.saidWhatTheCatalogue(counts.unchanged),
     };
   if (headerFaults.length > 0)
     return {
-      heading: 'The columns can’t be read as they are',
-      sentence: 'Correct the first row, then look again. Nothing was written.',
+      heading: importPage.theColumnsCantBe,
+      sentence: importPage.correctTheFirstRow,
     };
   if (counts.faulty > 0)
     return {
-      heading: `${countAtStart(counts.faulty)} of ${state.preview.rows.length} rows can’t be imported`,
-      sentence: 'Correct the marked cells in the file or below, then look again. Nothing was written.',
+      heading: importPage.ofRowsCantBe(counts.faulty, state.preview.rows.length),
+      sentence: importPage.correctTheMarkedCells,
     };
   if (counts.new + counts.changed === 0)
     return {
-      heading: 'The catalogue says all of this already',
-      sentence: `${countAtStart(counts.unchanged)} ${counts.unchanged === 1 ? 'row' : 'rows'} read, nothing to change.`,
+      heading: importPage.theCatalogueSaysAll,
+      sentence: importPage.readNothingToChange(counts.unchanged),
     };
   return {
-    heading: `${countAtStart(counts.new)} new, ${counts.changed} to change`,
-    sentence: `${counted(counts.unchanged, 'row')} already there and the same. Look through what would change, then import.`,
+    heading: importPage.newToChange(counts.new, counts.changed),
+    sentence: importPage.alreadyThereAndThe(counts.unchanged),
   };
 }
 
@@ -84,7 +83,7 @@ export function ImportPage({ family }: { family: EquipmentFamily }) {
     if (chosen.size > MOST_BYTES) {
       setState({
         step: 'failed',
-        message: `${chosen.name} has ${Math.ceil(chosen.size / 1000)} kB. Import at most ${MOST_BYTES / 1000} kB at once: a catalogue is a short list.`,
+        message: importPage.hasKBImportAt(chosen.name, Math.ceil(chosen.size / 1000), MOST_BYTES),
       });
       return;
     }
@@ -92,7 +91,7 @@ export function ImportPage({ family }: { family: EquipmentFamily }) {
     if (rows.includes('\u0000')) {
       setState({
         step: 'failed',
-        message: `${chosen.name} is no text. Save the spreadsheet as CSV, or copy its cells and paste them here.`,
+        message: importPage.isNoTextSave(chosen.name),
       });
       return;
     }
@@ -111,7 +110,7 @@ export function ImportPage({ family }: { family: EquipmentFamily }) {
     <>
       <Heading
         crumbs={[
-          { label: 'Equipment', href: paths.equipment() },
+          { label: importPage.equipment, href: paths.equipment() },
           { label: FAMILY_LABELS[family], href: paths.equipmentList(family) },
         ]}
         finding={heading}
@@ -119,15 +118,15 @@ export function ImportPage({ family }: { family: EquipmentFamily }) {
       />
       <div className="grid gap-5">
         {state.step === 'failed' && (
-          <Notice kind="failed" title="Not read">
+          <Notice kind="failed" title={importPage.notRead}>
             {state.message}
           </Notice>
         )}
         {state.step === 'imported' && (
           <Notice
             kind="done"
-            title="Imported"
-            action={<ButtonLink href={paths.equipmentList(family)}>To the list</ButtonLink>}
+            title={importPage.imported}
+            action={<ButtonLink href={paths.equipmentList(family)}>{importPage.toTheList}</ButtonLink>}
           />
         )}
         {preview && (
@@ -142,14 +141,14 @@ export function ImportPage({ family }: { family: EquipmentFamily }) {
                     void send(text, state.preview.fingerprint);
                   }}
                 >
-                  Import {counted(state.preview.counts.new + state.preview.counts.changed, 'row')}
+                  {importPage.importN(state.preview.counts.new, state.preview.counts.changed)}
                 </Button>
               )
             }
           />
         )}
         {state.step !== 'imported' && (
-          <Sheet title="Rows" id="rows">
+          <Sheet title={importPage.rows} id="rows">
             <div className="mb-3 flex flex-wrap items-center gap-3">
               <input
                 ref={file}
@@ -165,14 +164,14 @@ export function ImportPage({ family }: { family: EquipmentFamily }) {
                 }}
               />
               <Button disabled={busy} onClick={() => file.current?.click()}>
-                Choose a file
+                {importPage.chooseAFile}
               </Button>
               <ButtonLink href={paths.api.equipmentCsv(family)} download>
-                Download the list as a pattern
+                {importPage.downloadTheListAs}
               </ButtonLink>
             </div>
             <label htmlFor="pasted" className="mb-1 block font-medium">
-              Or paste the cells of a spreadsheet, with the row of column names
+              {importPage.orPasteTheCells}
             </label>
             <textarea
               id="pasted"
@@ -188,16 +187,17 @@ export function ImportPage({ family }: { family: EquipmentFamily }) {
                 disabled={busy || text.trim() === ''}
                 onClick={() => void look(text)}
               >
-                {state.step === 'looking' ? 'Looking…' : preview ? 'Look again' : 'Look at the rows'}
+                {state.step === 'looking'
+                  ? importPage.looking
+                  : preview
+                    ? importPage.lookAgain
+                    : importPage.lookAtTheRows}
               </Button>
-              {busy && <span role="status">Every row is being read…</span>}
+              {busy && <span role="status">{importPage.everyRowIsBeing}</span>}
             </div>
             <details className="mt-4 text-ink-2">
-              <summary className="target cursor-pointer py-3">Columns that are understood</summary>
-              <p>
-                {FIELDS[family].map(headerOf).join(' · ')}. Decimal points or commas; separated by comma,
-                semicolon or tab. Columns that a type has already may be left out.
-              </p>
+              <summary className="target cursor-pointer py-3">{importPage.columnsThatAreUnderstood}</summary>
+              <p>{importPage.decimalPointsOrCommas(FIELDS[family].map(headerOf).join(' · '))}</p>
             </details>
           </Sheet>
         )}

@@ -7,6 +7,7 @@ import { ApiError, api, withQuery } from '../../lib/api';
 import { uploadFile } from '../../lib/upload';
 import { pairInput, type ConnectorItem } from '../../schemas/api/equipment';
 import { paths } from '../../schemas/paths';
+import { pairForm } from '../../words/equipment';
 
 interface Props {
   connectors: readonly ConnectorItem[];
@@ -29,7 +30,7 @@ export function PairForm({ connectors, onDone }: Props) {
   const [recorded, setRecorded] = useState<{ id: string; ref: string } | null>(null);
   const set = (key: keyof Typed) => (value: string) => setTyped((old) => ({ ...old, [key]: value }));
   const options = [
-    { value: '', label: 'Choose' },
+    { value: '', label: pairForm.choose },
     ...connectors
       .filter((c) => !c.archived)
       .map((c) => ({ value: c.id, label: `${c.name} (${c.maker} ${c.family})` })),
@@ -41,7 +42,7 @@ export function PairForm({ connectors, onDone }: Props) {
         Object.fromEntries(
           read.error.issues.map((i) => [
             String(i.path[0]),
-            i.path[0] === 'first' || i.path[0] === 'second' ? 'Choose a type.' : i.message,
+            i.path[0] === 'first' || i.path[0] === 'second' ? pairForm.chooseAType : i.message,
           ]),
         ),
       );
@@ -88,30 +89,26 @@ export function PairForm({ connectors, onDone }: Props) {
       }}
     >
       <Choice
-        label="One half"
+        label={pairForm.oneHalf}
         options={options}
         value={typed.first}
         error={faults.first ?? null}
         onChange={set('first')}
       />
       <Choice
-        label="The other half"
+        label={pairForm.theOtherHalf}
         options={options}
         value={typed.second}
         error={faults.second ?? null}
         onChange={set('second')}
       />
-      {text(
-        'document',
-        'Document',
-        'Its title and number, and who issued it. Both makers should stand by it.',
-      )}
-      {text('edition', 'Edition or date')}
-      {text('page', 'Page or table')}
-      {text('note', 'Note', 'Conditions that it names: cable, tool, temperature.')}
+      {text('document', pairForm.document, pairForm.itsTitleAndNumber)}
+      {text('edition', pairForm.editionOrDate)}
+      {text('page', pairForm.pageOrTable)}
+      {text('note', pairForm.note, pairForm.conditionsThatItNames)}
       <div>
         <label htmlFor="evidence" className="mb-1 block font-medium">
-          The document itself
+          {pairForm.theDocumentItself}
         </label>
         <input
           id="evidence"
@@ -125,27 +122,24 @@ export function PairForm({ connectors, onDone }: Props) {
           }}
         />
         <p id="evidence-hint" className="mt-1 text-sm text-ink-2">
-          A PDF or a picture, at most 25 MB. Without it the record says only where to find it.
+          {pairForm.aPDFOrA}
         </p>
       </div>
       {failed && (
-        <Notice
-          kind="failed"
-          title={recorded ? 'The pair is recorded, its document is not here yet' : 'Not recorded'}
-        >
+        <Notice kind="failed" title={recorded ? pairForm.thePairIsRecorded : pairForm.notRecorded}>
           {failed}
         </Notice>
       )}
       {sent !== null && (
         <p role="status">
-          {sent < 1 ? `Sending the document: ${Math.round(100 * sent)} %` : 'The document is being read…'}
+          {sent < 1 ? pairForm.sendingTheDocument(Math.round(100 * sent)) : pairForm.theDocumentIsBeing}
         </p>
       )}
       <div className="flex flex-wrap gap-2">
         <Button weight="primary" type="submit" disabled={busy || (recorded !== null && !file)}>
-          {busy ? 'Recording…' : recorded ? 'Send the document again' : 'Record the pair'}
+          {busy ? pairForm.recording : recorded ? pairForm.sendTheDocumentAgain : pairForm.recordThePair}
         </Button>
-        {recorded && !busy && <Button onClick={onDone}>Leave it without</Button>}
+        {recorded && !busy && <Button onClick={onDone}>{pairForm.leaveItWithout}</Button>}
       </div>
     </form>
   );

@@ -11,6 +11,7 @@ import { ApiError, api } from '../../lib/api';
 import type { ConnectorItem, PairItem } from '../../schemas/api/equipment';
 import { paths } from '../../schemas/paths';
 import { PairForm } from './PairForm';
+import { pairsSheet } from '../../words/equipment';
 
 interface Props {
   pairs: readonly PairItem[];
@@ -37,35 +38,30 @@ export function PairsSheet({ pairs, connectors, mayRecord, timeZone }: Props) {
   return (
     <Sheet
       flush
-      title="Documented pairs of different connectors"
+      title={pairsSheet.documentedPairsOfDifferent}
       id="pairs"
       className="mt-6"
       aside={CONNECTOR_CLAUSE}
     >
-      <p className="mb-3 max-w-[760px] text-ink-2">
-        Where a string mates two different types and no pair stands here, its install check fails as a fire
-        risk.
-      </p>
+      <p className="mb-3 max-w-[760px] text-ink-2">{pairsSheet.whereAStringMates}</p>
       <Table
-        caption="Pairs of connector types that are documented as intermatable"
+        caption={pairsSheet.pairsOfConnectorTypes}
         rows={pairs}
         rowKey={(p) => p.id}
         columns={[
           {
             key: 'pair',
-            label: 'Pair',
+            label: pairsSheet.pair,
             cell: (p) => (
               <>
-                <span className="font-medium">
-                  {p.first.name} with {p.second.name}
-                </span>
+                <span className="font-medium">{pairsSheet.firstWithSecond(p.first.name, p.second.name)}</span>
                 <span className="block text-sm text-ink-2 md:hidden">{p.evidence}</span>
               </>
             ),
           },
           {
             key: 'evidence',
-            label: 'Evidence',
+            label: pairsSheet.evidence,
             from: 'md',
             cell: (p) => (
               <>
@@ -80,7 +76,7 @@ export function PairsSheet({ pairs, connectors, mayRecord, timeZone }: Props) {
           },
           {
             key: 'by',
-            label: 'Recorded by',
+            label: pairsSheet.recordedBy,
             from: 'sm',
             cell: (p) => (
               <>
@@ -91,19 +87,19 @@ export function PairsSheet({ pairs, connectors, mayRecord, timeZone }: Props) {
           },
           {
             key: 'state',
-            label: 'State',
+            label: pairsSheet.state,
             className: 'text-right sm:text-left',
             cell: (p) =>
               p.endedAt ? (
                 <Tag tone="slate" title={fullTime(p.endedAt, timeZone)}>
-                  Ended
+                  {pairsSheet.ended}
                 </Tag>
               ) : (
                 <span className="inline-flex flex-wrap items-center justify-end gap-x-3 gap-y-1">
-                  In force
+                  {pairsSheet.inForce}
                   {mayRecord && (
                     <Button className="!px-3 !text-sm" onClick={() => setEnding(p)}>
-                      End
+                      {pairsSheet.end}
                     </Button>
                   )}
                 </span>
@@ -112,38 +108,35 @@ export function PairsSheet({ pairs, connectors, mayRecord, timeZone }: Props) {
         ]}
         empty={
           <div className="py-3">
-            <Notice kind="empty" title="No pair is documented">
-              Only identical connectors may be mated.
+            <Notice kind="empty" title={pairsSheet.noPairIsDocumented}>
+              {pairsSheet.onlyIdenticalConnectorsMay}
             </Notice>
           </div>
         }
       />
       {mayRecord ? (
         <Button className="mt-4" onClick={() => setRecording(true)}>
-          Record a documented pair
+          {pairsSheet.recordADocumentedPair}
         </Button>
       ) : (
-        <p className="mt-3 text-sm text-ink-2">A manager records pairs and ends them.</p>
+        <p className="mt-3 text-sm text-ink-2">{pairsSheet.aManagerRecordsPairs}</p>
       )}
-      <Dialog open={recording} title="Record a documented pair" onClose={() => setRecording(false)}>
+      <Dialog open={recording} title={pairsSheet.recordADocumentedPair} onClose={() => setRecording(false)}>
         <PairForm connectors={connectors} onDone={() => window.location.reload()} />
       </Dialog>
-      <Dialog open={ending !== null} title="End this pair" onClose={() => setEnding(null)}>
+      <Dialog open={ending !== null} title={pairsSheet.endThisPair} onClose={() => setEnding(null)}>
         {ending && (
           <>
-            <p className="mb-4">
-              From now on {ending.first.name} and {ending.second.name} count as not documented: where they are
-              mated, design and install checks name a fire risk. The record stays to be seen.
-            </p>
+            <p className="mb-4">{pairsSheet.fromNowOnAnd(ending.first.name, ending.second.name)}</p>
             {fault && (
               <div className="mb-4">
-                <Notice kind="failed" title="Not ended">
+                <Notice kind="failed" title={pairsSheet.notEnded}>
                   {fault}
                 </Notice>
               </div>
             )}
             <Button weight="primary" onClick={() => void end(ending)}>
-              End the pair
+              {pairsSheet.endThePair}
             </Button>
           </>
         )}

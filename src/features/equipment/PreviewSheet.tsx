@@ -2,14 +2,14 @@ import type { ReactNode } from 'react';
 import { Sheet } from '../../components/ui/Sheet';
 import { Table } from '../../components/ui/Table';
 import { Tag, type Tone } from '../../components/ui/Tag';
-import { counted } from '../../drawings/numbers';
 import type { ImportFault, ImportPreview, ImportRow } from '../../schemas/api/equipment';
+import { previewSheet } from '../../words/equipment-import';
 
 const OUTCOME: Record<ImportRow['outcome'], { tone: Tone; shape: string; word: string }> = {
-  new: { tone: 'petrol', shape: '+', word: 'New' },
-  changed: { tone: 'plum', shape: '≠', word: 'Changes' },
-  unchanged: { tone: 'plain', shape: '=', word: 'Unchanged' },
-  faulty: { tone: 'rust', shape: '×', word: 'Faulty' },
+  new: { tone: 'petrol', shape: '+', word: previewSheet.new },
+  changed: { tone: 'plum', shape: '≠', word: previewSheet.changes },
+  unchanged: { tone: 'plain', shape: '=', word: previewSheet.unchanged },
+  faulty: { tone: 'rust', shape: '×', word: previewSheet.faulty },
 };
 const RANK = { faulty: 0, changed: 1, new: 2, unchanged: 3 } as const;
 
@@ -27,28 +27,33 @@ export function PreviewSheet({ preview, actions }: { preview: ImportPreview; act
   return (
     <>
       {faults.length > 0 && (
-        <Sheet flush title="Cells to correct" id="faults" aside={counted(faults.length, 'cell')}>
+        <Sheet
+          flush
+          title={previewSheet.cellsToCorrect}
+          id="faults"
+          aside={previewSheet.countedFaultsCell(faults.length)}
+        >
           <Table
-            caption="Cells that can’t be imported, with why and what to do"
+            caption={previewSheet.cellsThatCantBe}
             rows={faults}
             rowKey={(f) => `${f.row} ${f.column} ${f.why}`}
             columns={[
-              { key: 'row', label: 'Row', cell: (f) => f.row },
+              { key: 'row', label: previewSheet.row, cell: (f) => f.row },
               {
                 key: 'column',
-                label: 'Column',
+                label: previewSheet.column,
                 cell: (f) => (
                   <>
                     {f.column}
                     <span className="block text-sm text-ink-2">
-                      {f.typed === '' ? 'empty' : `"${f.typed}"`}
+                      {f.typed === '' ? previewSheet.empty : `"${f.typed}"`}
                     </span>
                   </>
                 ),
               },
               {
                 key: 'why',
-                label: 'Why, and what to do',
+                label: previewSheet.whyAndWhatTo,
                 cell: (f) => (
                   <>
                     {f.why} <span className="text-ink-2">{f.remedy}</span>
@@ -60,16 +65,20 @@ export function PreviewSheet({ preview, actions }: { preview: ImportPreview; act
         </Sheet>
       )}
       {rows.length > 0 && (
-        <Sheet flush title={preview.imported ? 'What was imported' : 'What would happen'} id="preview">
+        <Sheet
+          flush
+          title={preview.imported ? previewSheet.whatWasImported : previewSheet.whatWouldHappen}
+          id="preview"
+        >
           <Table
-            caption="Rows of the file and what becomes of each"
+            caption={previewSheet.rowsOfTheFile}
             rows={rows}
             rowKey={(r) => String(r.row)}
             columns={[
-              { key: 'row', label: 'Row', cell: (r) => r.row },
+              { key: 'row', label: previewSheet.row, cell: (r) => r.row },
               {
                 key: 'outcome',
-                label: 'Outcome',
+                label: previewSheet.outcome,
                 cell: (r) => (
                   <Tag tone={OUTCOME[r.outcome].tone} shape={OUTCOME[r.outcome].shape}>
                     {OUTCOME[r.outcome].word}
@@ -78,22 +87,22 @@ export function PreviewSheet({ preview, actions }: { preview: ImportPreview; act
               },
               {
                 key: 'name',
-                label: 'Type',
+                label: previewSheet.type,
                 cell: (r) => (
                   <>
-                    <span className="font-medium">{r.name || 'no name'}</span>
+                    <span className="font-medium">{r.name || previewSheet.noName}</span>
                     {r.changes.map((c) => (
                       <span key={c.label} className="block text-sm text-ink-2">
-                        {c.label}: {c.before || 'empty'} →{' '}
-                        <span className="text-ink">{c.after || 'empty'}</span>
+                        {c.label}: {c.before || previewSheet.empty} →{' '}
+                        <span className="text-ink">{c.after || previewSheet.empty}</span>
                       </span>
                     ))}
                     {r.outcome === 'changed' && r.strings > 0 && (
-                      <span className="block text-sm">{counted(r.strings, 'string')} rest on it.</span>
+                      <span className="block text-sm">{previewSheet.restOnIt(r.strings)}</span>
                     )}
                     {r.doubts.map((d) => (
                       <span key={d} className="block text-sm text-rust-ink">
-                        Unusual: {d}
+                        {previewSheet.unusualD(d)}
                       </span>
                     ))}
                   </>
@@ -103,7 +112,7 @@ export function PreviewSheet({ preview, actions }: { preview: ImportPreview; act
           />
           {preview.ignoredColumns.length > 0 && (
             <p className="mt-3 text-sm text-ink-2">
-              Columns that are none of ours were left aside: {preview.ignoredColumns.join(', ')}.
+              {previewSheet.columnsThatAreNone(preview.ignoredColumns.join(', '))}
             </p>
           )}
           {actions && <div className="mt-4">{actions}</div>}

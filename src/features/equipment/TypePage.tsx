@@ -11,6 +11,7 @@ import { FormField } from './FormField';
 import { groupsOf } from './form';
 import { FAMILY_LABELS, ONE, touches, usedWords } from './words';
 import { useTypeForm } from './use-type-form';
+import { typePage } from '../../words/equipment';
 
 interface Props {
   family: EquipmentFamily;
@@ -40,10 +41,10 @@ export function TypePage({ family, item: start, connectors, mayWrite, changed }:
     <>
       <Heading
         crumbs={[
-          { label: 'Equipment', href: paths.equipment() },
+          { label: typePage.equipment, href: paths.equipment() },
           { label: FAMILY_LABELS[family], href: paths.equipmentList(family) },
         ]}
-        finding={item ? String(item.entry.name) : `A new ${ONE[family]}`}
+        finding={item ? String(item.entry.name) : typePage.aNewFamily(ONE[family])}
         sentence={item ? sentenceOf(item, changed) : NEW_SENTENCE[family]}
         actions={
           item &&
@@ -52,15 +53,15 @@ export function TypePage({ family, item: start, connectors, mayWrite, changed }:
               disabled={saving.step === 'saving'}
               onClick={() => void form.setArchived(item.archivedAt === null)}
             >
-              {item.archivedAt ? 'Restore' : 'Archive'}
+              {item.archivedAt ? typePage.restore : typePage.archive}
             </Button>
           )
         }
       />
       {item?.archivedAt && (
         <div className="mb-5">
-          <Notice kind="stale" title="This type is archived">
-            It can’t be chosen for new strings. What rests on it keeps resting on it.
+          <Notice kind="stale" title={typePage.thisTypeIsArchived}>
+            {typePage.itCantBeChosen}
           </Notice>
         </div>
       )}
@@ -115,18 +116,15 @@ export function TypePage({ family, item: start, connectors, mayWrite, changed }:
 }
 
 const NEW_SENTENCE: Record<EquipmentFamily, string> = {
-  modules:
-    'Type what the datasheet says at STC. The curve that follows, and how well it fits, is drawn as you type.',
-  units:
-    'Choose a kind: it fills the form with what is usual. Then change what the maker’s sheet says otherwise.',
-  connectors: 'Type maker and type as they are embossed on the connector.',
-  inverters:
-    'Type the DC side of the sheet: limits of one input, and the window in which it finds the maximum power.',
+  modules: typePage.typeWhatTheDatasheet,
+  units: typePage.chooseAKindIt,
+  connectors: typePage.typeMakerAndType,
+  inverters: typePage.typeTheDCSide,
 };
 
 function sentenceOf(item: CatalogueItem, changed: string | null): ReactNode {
-  const use = item.strings + item.types === 0 ? 'Not used yet' : `Used by ${usedWords(item)}`;
-  return `${use}.${changed ? ` Last changed by ${changed}.` : ''}`;
+  const use = item.strings + item.types === 0 ? typePage.notUsedYet : typePage.usedBy(usedWords(item));
+  return `${use}.${changed ? typePage.lastChangedBy(changed) : ''}`;
 }
 
 type Form = ReturnType<typeof useTypeForm>;
@@ -136,7 +134,7 @@ function Doubts({ form }: { form: Form }) {
   const { doubts } = form.reading;
   if (doubts.length === 0) return null;
   return (
-    <Sheet title="Worth a second look" id="doubts" aside={`${form.open.length} to decide`}>
+    <Sheet title={typePage.worthASecondLook} id="doubts" aside={typePage.toDecide(form.open.length)}>
       <ul className="grid gap-3">
         {doubts.map((doubt) => (
           <li key={doubt.key}>
@@ -149,7 +147,7 @@ function Doubts({ form }: { form: Form }) {
                 data-open-doubt={form.state.accepted.includes(doubt.key) ? undefined : ''}
                 onChange={(event) => form.accept(doubt.key, event.target.checked)}
               />
-              The sheet says so: keep it
+              {typePage.theSheetSaysSo}
             </label>
           </li>
         ))}
@@ -174,26 +172,26 @@ function SavePanel({ form, family, name, onSave }: SaveProps) {
     <div className="grid gap-3">
       {touched && <p className="max-w-[760px] text-ink-2">{touched}</p>}
       {saving.step === 'failed' && (
-        <Notice kind="failed" title="Not saved">
+        <Notice kind="failed" title={typePage.notSaved}>
           {saving.message}
         </Notice>
       )}
       {saving.step === 'saved' && (
         <Notice
           kind="done"
-          title={`${name} is saved`}
-          action={<ButtonLink href={paths.equipmentList(family)}>Back to the list</ButtonLink>}
+          title={typePage.isSaved(name)}
+          action={<ButtonLink href={paths.equipmentList(family)}>{typePage.backToTheList}</ButtonLink>}
         />
       )}
       {saving.step === 'overtaken' && (
         <Notice
           kind="stale"
-          title="Somebody else saved this type first"
+          title={typePage.somebodyElseSavedThis}
           action={
             <div className="flex flex-wrap gap-2">
-              <Button onClick={() => form.takeTheirs(saving.theirs)}>Take theirs</Button>
+              <Button onClick={() => form.takeTheirs(saving.theirs)}>{typePage.takeTheirs}</Button>
               <Button weight="primary" onClick={() => onSave(saving.theirs.version)}>
-                Save mine over it
+                {typePage.saveMineOverIt}
               </Button>
             </div>
           }
@@ -204,13 +202,13 @@ function SavePanel({ form, family, name, onSave }: SaveProps) {
       {saving.step !== 'overtaken' && (
         <div className="flex flex-wrap items-center gap-x-4 gap-y-2">
           <Button weight="primary" type="submit" disabled={busy || (item !== null && !form.dirty)}>
-            {busy ? 'Saving…' : item ? 'Save the change' : `Save the ${ONE[family]}`}
+            {busy ? typePage.saving : item ? typePage.saveTheChange : typePage.saveThe(ONE[family])}
           </Button>
           <p role="status" className="text-sm text-ink-2">
             {faults > 0
-              ? `${faults} ${faults === 1 ? 'field is' : 'fields are'} not complete yet.`
+              ? typePage.notCompleteYet(faults)
               : form.open.length > 0
-                ? 'Decide what is worth a second look, then save.'
+                ? typePage.decideWhatIsWorth
                 : ''}
           </p>
         </div>

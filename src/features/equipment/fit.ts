@@ -3,6 +3,7 @@ import { moduleSheetOf } from '../../domain/equipment/module-fields';
 import type { ModuleSheet } from '../../domain/equipment/module-type';
 import { moduleFromDatasheet, type FittedModule } from '../../domain/photovoltaics/module/datasheet';
 import { number } from '../../drawings/numbers';
+import { equipmentFit } from '../../words/equipment';
 
 export interface FitLine {
   label: string;
@@ -26,10 +27,10 @@ export interface ModuleFit {
 }
 
 const WORDS = {
-  good: 'One module can have all of these values: the curve meets the sheet.',
-  remarked: 'The curve meets the points of the sheet, but what follows from it differs:',
-  fair: 'The curve comes close to the sheet; the small differences are usual for rounded figures.',
-  poor: 'No single module has all of these values: check the marked ones against the sheet.',
+  good: equipmentFit.oneModuleCanHave,
+  remarked: equipmentFit.theCurveMeetsThe,
+  fair: equipmentFit.theCurveComesClose,
+  poor: equipmentFit.noSingleModuleHas,
 } as const;
 
 /** The curve that a whole datasheet gives, and how it differs from each printed figure. */
@@ -70,8 +71,8 @@ export function fitOf(entry: Entry): ModuleFit {
       line('vmp', sheet.vmpRef, fit.vmp, 'fitted', 'V', 2),
       line('imp', sheet.impRef, fit.imp, 'fitted', 'A', 2),
       line('pmp', sheet.vmpRef * sheet.impRef, fit.pmp, 'follows', 'W', 1),
-      line('voc per K', 100 * sheet.betaVoc, fit.betaVoc, 'fitted', '%', 3),
-      line('pmp per K', 100 * sheet.gammaPmp, fit.gammaPmp, 'follows', '%', 3),
+      line(equipmentFit.vocPerK, 100 * sheet.betaVoc, fit.betaVoc, 'fitted', '%', 3),
+      line(equipmentFit.pmpPerK, 100 * sheet.gammaPmp, fit.gammaPmp, 'follows', '%', 3),
     ],
   };
 }

@@ -2,11 +2,12 @@ import type { Column } from '../../components/ui/Table';
 import { Tag } from '../../components/ui/Tag';
 import { KIND_WORDS } from '../../domain/equipment/unit-fields';
 import type { UnitKind } from '../../domain/equipment/unit-type';
-import { amperes, counted, number, power, quantity } from '../../drawings/numbers';
+import { number, power, quantity } from '../../drawings/numbers';
 import type { Catalogue, CatalogueItem } from '../../schemas/api/equipment';
 import { paths } from '../../schemas/paths';
 import { connectorNamesOf, nameOf } from './list';
 import { usedWords } from './words';
+import { equipmentListColumns } from '../../words/equipment';
 
 type Row = CatalogueItem;
 const n = (row: Row, key: string): number | null => {
@@ -37,9 +38,12 @@ const watts = (row: Row): number => (n(row, 'vmpRef') ?? 0) * (n(row, 'impRef') 
 function inShort(family: Catalogue['family'], row: Row): string {
   switch (family) {
     case 'modules':
-      return `${power(watts(row))}, voc ${volts(n(row, 'vocRef'))}, isc ${amperes(n(row, 'iscRef'))}`;
+      return equipmentListColumns.vocIsc(watts(row), n(row, 'vocRef'), n(row, 'iscRef'));
     case 'units':
-      return `${KIND_WORDS[text(row, 'kind') as UnitKind]}, ${quantity(n(row, 'shutdownVoltageNominal'), 'V', 2)} in shutdown`;
+      return equipmentListColumns.inShutdown(
+        KIND_WORDS[text(row, 'kind') as UnitKind],
+        n(row, 'shutdownVoltageNominal'),
+      );
     case 'connectors':
       return `${text(row, 'maker')} ${text(row, 'family')}`;
     case 'inverters':
@@ -51,7 +55,7 @@ const MIDDLE: Record<Catalogue['family'], (names: Map<string, string>) => Column
   modules: (names) => [
     {
       key: 'power',
-      label: 'Power',
+      label: equipmentListColumns.power,
       numeric: true,
       sortable: true,
       from: 'sm',
@@ -59,46 +63,71 @@ const MIDDLE: Record<Catalogue['family'], (names: Map<string, string>) => Column
     },
     figure('vocRef', 'Voc', volts, 'sm'),
     figure('iscRef', 'Isc', (v) => quantity(v, 'A', 2), 'sm'),
-    figure('betaVoc', 'Voc per K', (v) => quantity(v === null ? null : 100 * v, '%', 2), 'md'),
+    figure(
+      'betaVoc',
+      equipmentListColumns.vocPerK,
+      (v) => quantity(v === null ? null : 100 * v, '%', 2),
+      'md',
+    ),
     {
       key: 'connector',
-      label: 'Connector',
+      label: equipmentListColumns.connector,
       from: 'lg',
-      cell: (row) => names.get(text(row, 'connector')) ?? <span className="text-ink-2">not entered</span>,
+      cell: (row) =>
+        names.get(text(row, 'connector')) ?? (
+          <span className="text-ink-2">{equipmentListColumns.notEntered}</span>
+        ),
     },
   ],
   units: () => [
     {
       key: 'kind',
-      label: 'Kind',
+      label: equipmentListColumns.kind,
       sortable: true,
       from: 'sm',
       cell: (row) => KIND_WORDS[text(row, 'kind') as UnitKind],
     },
-    figure('shutdownVoltageNominal', 'In shutdown', (v) => quantity(v, 'V', 2), 'sm'),
-    figure('voltageInMax', 'Input up to', volts, 'md'),
-    figure('currentMax', 'Current up to', current, 'md'),
-    figure('insulationTestMax', 'Insulation test', (v) => (v === null ? 'none allowed' : volts(v)), 'lg'),
+    figure('shutdownVoltageNominal', equipmentListColumns.inShutdown2, (v) => quantity(v, 'V', 2), 'sm'),
+    figure('voltageInMax', equipmentListColumns.inputUpTo, volts, 'md'),
+    figure('currentMax', equipmentListColumns.currentUpTo, current, 'md'),
+    figure(
+      'insulationTestMax',
+      equipmentListColumns.insulationTest,
+      (v) => (v === null ? equipmentListColumns.noneAllowed : volts(v)),
+      'lg',
+    ),
   ],
   connectors: () => [
-    { key: 'maker', label: 'Maker', sortable: true, from: 'sm', cell: (row) => text(row, 'maker') },
-    { key: 'family', label: 'Type', sortable: true, from: 'sm', cell: (row) => text(row, 'family') },
-    figure('voltageMax', 'Up to', volts, 'md'),
-    figure('currentMax', 'Current up to', current, 'md'),
+    {
+      key: 'maker',
+      label: equipmentListColumns.maker,
+      sortable: true,
+      from: 'sm',
+      cell: (row) => text(row, 'maker'),
+    },
+    {
+      key: 'family',
+      label: equipmentListColumns.type,
+      sortable: true,
+      from: 'sm',
+      cell: (row) => text(row, 'family'),
+    },
+    figure('voltageMax', equipmentListColumns.upTo, volts, 'md'),
+    figure('currentMax', equipmentListColumns.currentUpTo, current, 'md'),
   ],
   inverters: () => [
-    figure('acPowerMax', 'AC power', kiloWatts, 'sm'),
-    figure('inputs', 'Inputs', (v) => number(v), 'sm'),
-    figure('voltageMax', 'DC up to', volts, 'sm'),
+    figure('acPowerMax', equipmentListColumns.acPower, kiloWatts, 'sm'),
+    figure('inputs', equipmentListColumns.inputs, (v) => number(v), 'sm'),
+    figure('voltageMax', equipmentListColumns.dcUpTo, volts, 'sm'),
     {
       key: 'mpptMin',
-      label: 'MPPT window',
+      label: equipmentListColumns.mpptWindow,
       numeric: true,
       sortable: true,
       from: 'md',
-      cell: (row) => `${number(n(row, 'mpptMin'))} to ${volts(n(row, 'mpptMax'))}`,
+      cell: (row) => equipmentListColumns.rowToRow(n(row, 'mpptMin'), n(row, 'mpptMax')),
     },
-    figure('iscMax', 'Isc of one input', current, 'lg'),
+    figure('iscMax', equipmentListColumns.iscOfOneInput, current, 'lg'),
   ],
 };
 
@@ -107,7 +136,7 @@ export function listColumns(catalogue: Catalogue): Column<Row>[] {
   return [
     {
       key: 'name',
-      label: 'Name',
+      label: equipmentListColumns.name,
       sortable: true,
       cell: (row) => (
         <>
@@ -119,7 +148,7 @@ export function listColumns(catalogue: Catalogue): Column<Row>[] {
           </a>
           {row.archivedAt && (
             <span className="ml-2">
-              <Tag tone="slate">Archived</Tag>
+              <Tag tone="slate">{equipmentListColumns.archived}</Tag>
             </span>
           )}
           <p className="text-sm text-ink-2 sm:hidden">{inShort(family, row)}</p>
@@ -129,7 +158,7 @@ export function listColumns(catalogue: Catalogue): Column<Row>[] {
     ...MIDDLE[family](connectorNamesOf(catalogue)),
     {
       key: 'use',
-      label: 'In use',
+      label: equipmentListColumns.inUse,
       numeric: true,
       sortable: true,
       cell: (row) => (
@@ -137,11 +166,11 @@ export function listColumns(catalogue: Catalogue): Column<Row>[] {
           <span aria-hidden="true">
             {row.types > 0 && (
               <span className="block sm:inline">
-                {counted(row.types, 'type')}
+                {equipmentListColumns.countedTypesType(row.types)}
                 {row.strings > 0 && <span className="hidden sm:inline">, </span>}
               </span>
             )}
-            {row.strings > 0 && counted(row.strings, 'string')}
+            {row.strings > 0 && equipmentListColumns.countedStringsString(row.strings)}
             {row.strings + row.types === 0 && '–'}
           </span>
           <span className="sr-only">{usedWords(row)}</span>

@@ -8,11 +8,12 @@ import { Notice } from '../../components/ui/Notice';
 import { Sheet } from '../../components/ui/Sheet';
 import { SiteTime } from '../../components/ui/Time';
 import { openGaps } from '../../domain/commissioning/steps';
-import { counted, listed, number } from '../../drawings/numbers';
+import { listed, number } from '../../drawings/numbers';
 import { api, ApiError } from '../../lib/api';
 import { queryClient } from '../../lib/query-client';
 import { paths } from '../../schemas/paths';
 import type { HandoverPage, PackItem } from '../../schemas/api/handover';
+import { handoverWords } from '../../words/handover';
 
 interface Props {
   initial: HandoverPage;
@@ -24,39 +25,43 @@ export function handoverFinding({ site, packs }: HandoverPage): { finding: strin
   const [newest] = packs;
   if (open.length > 0)
     return {
-      finding: `${counted(open.length, 'point blocks', 'points block')} the handover of ${site.name}`,
-      sentence: 'Settle each where it belongs, or have a manager accept it by name and with a reason.',
+      finding: handoverWords.theHandoverOf(open.length, site.name),
+      sentence: handoverWords.settleEachWhereIt,
     };
   if (newest)
     return {
-      finding: `${site.name} was handed over with version ${newest.version}`,
-      sentence: 'A later change makes a new version; every version is kept as it was.',
+      finding: handoverWords.wasHandedOverWith(site.name, newest.version),
+      sentence: handoverWords.aLaterChangeMakes,
     };
   return {
-    finding: `${site.name} can be handed over`,
-    sentence: 'Everything before it is done, or its gaps are accepted by name.',
+    finding: handoverWords.canBeHandedOver(site.name),
+    sentence: handoverWords.everythingBeforeItIs,
   };
 }
 
 const size = (bytes: number): string =>
-  bytes < 1e6 ? `${number(Math.max(1, bytes / 1000))} kB` : `${number(bytes / 1e6, 1)} MB`;
+  bytes < 1e6 ? handoverWords.maxKB(Math.max(1, bytes / 1000)) : handoverWords.bytesMB(bytes);
 
 function Pack({ pack, page }: { pack: PackItem; page: HandoverPage }) {
   return (
     <li className="grid gap-x-6 gap-y-2 border-b border-rule-faint py-3 last:border-b-0 sm:grid-cols-[minmax(0,1fr)_auto]">
       <div className="min-w-0">
-        <p className="font-semibold">Version {pack.version}</p>
+        <p className="font-semibold">{handoverWords.versionVersion(pack.version)}</p>
         <p className="text-sm text-ink-2">
           {pack.madeBy}, <SiteTime at={pack.madeAt} now={page.at} timeZone={page.site.timeZone} zone />
-          {pack.openPoints > 0 && ` · ${counted(pack.openPoints, 'accepted gap')}`}
+          {pack.openPoints > 0 && handoverWords.openPoints(pack.openPoints)}
         </p>
         {pack.remark && <p className="mt-1">{pack.remark}</p>}
-        <p className="mt-1 break-all text-sm text-ink-2">Fingerprint {pack.fingerprint}</p>
+        <p className="mt-1 break-all text-sm text-ink-2">
+          {handoverWords.fingerprintFingerprint(pack.fingerprint)}
+        </p>
       </div>
       <div className="flex flex-wrap content-start gap-2">
-        <ButtonLink href={`${paths.api.paper(pack.ref)}?form=pdf`}>PDF, {size(pack.pdfBytes)}</ButtonLink>
+        <ButtonLink href={`${paths.api.paper(pack.ref)}?form=pdf`}>
+          {handoverWords.pdfPdfBytes(size(pack.pdfBytes))}
+        </ButtonLink>
         <ButtonLink href={`${paths.api.paper(pack.ref)}?form=csv`}>
-          As-built CSV, {size(pack.csvBytes)}
+          {handoverWords.asBuiltCSV(size(pack.csvBytes))}
         </ButtonLink>
       </div>
     </li>
@@ -84,7 +89,7 @@ function MakePanel({ page, onMade }: { page: HandoverPage; onMade: () => void })
   };
   const again = page.packs.length > 0;
   return (
-    <Sheet id="make" title={again ? 'Make a new version' : 'Make the pack'}>
+    <Sheet id="make" title={again ? handoverWords.makeANewVersion : handoverWords.makeThePack}>
       <form
         onSubmit={(event) => {
           event.preventDefault();
@@ -92,14 +97,14 @@ function MakePanel({ page, onMade }: { page: HandoverPage; onMade: () => void })
         }}
       >
         <label htmlFor="remark" className="mb-1 block font-medium">
-          Remark
+          {handoverWords.remark}
         </label>
         <textarea
           id="remark"
           rows={3}
           value={remark}
           onChange={(event) => setRemark(event.target.value)}
-          placeholder={again ? 'What has changed since the version before' : ''}
+          placeholder={again ? handoverWords.whatHasChangedSince : ''}
           className="w-full rounded border border-rule bg-sheet px-3 py-2 text-[16px] placeholder:text-ink-3"
         />
         {page.customers.length > 0 ? (
@@ -110,10 +115,10 @@ function MakePanel({ page, onMade }: { page: HandoverPage; onMade: () => void })
               onChange={(event) => setTell(event.target.checked)}
               className="h-5 w-5 accent-[var(--petrol)]"
             />
-            Send {listed(page.customers)} a letter with the link
+            {handoverWords.sendLetterWithThe(listed(page.customers))}
           </label>
         ) : (
-          <p className="mt-2 text-sm text-ink-2">No customer can see this site yet, so no letter is sent.</p>
+          <p className="mt-2 text-sm text-ink-2">{handoverWords.noCustomerCanSee}</p>
         )}
         {fault && (
           <div className="mt-3">
@@ -129,13 +134,13 @@ function MakePanel({ page, onMade }: { page: HandoverPage; onMade: () => void })
           </div>
         )}
         <Button type="submit" weight="primary" disabled={busy} className="mt-3">
-          {busy ? 'Making the papers' : again ? 'Make a new version' : 'Hand the site over'}
+          {busy
+            ? handoverWords.makingThePapers
+            : again
+              ? handoverWords.makeANewVersion
+              : handoverWords.handTheSiteOver}
         </Button>
-        {!again && (
-          <p className="mt-2 text-sm text-ink-2">
-            The site becomes an operating one; its units are judged as such.
-          </p>
-        )}
+        {!again && <p className="mt-2 text-sm text-ink-2">{handoverWords.theSiteBecomesAn}</p>}
       </form>
     </Sheet>
   );
@@ -152,7 +157,7 @@ function StepPoints({ step, few }: { step: HandoverPage['site']['steps'][number]
     <details open={few || open.length <= 3}>
       <summary className="target cursor-pointer py-2 font-medium">
         {STEP_NAMES[step.key]}{' '}
-        <span className="ml-1 font-normal text-ink-2">{counted(open.length, 'point')}</span>
+        <span className="ml-1 font-normal text-ink-2">{handoverWords.countedOpenPoint(open.length)}</span>
       </summary>
       <ul className="divide-y divide-rule-faint pl-4">
         {open.map((gap) => (
@@ -183,14 +188,14 @@ export function Handover({ initial, mayMake }: Props) {
     <>
       <Heading
         crumbs={[
-          { label: 'Commissioning', href: paths.commissioning() },
+          { label: handoverWords.commissioning, href: paths.commissioning() },
           { label: page.site.name, href: paths.commissioningSite(page.site.id) },
-          { label: 'Handover' },
+          { label: handoverWords.handover },
         ]}
         finding={words.finding}
         sentence={words.sentence}
       />
-      <NotRead error={error} title="The handover could not be read again" className="mb-4" />
+      <NotRead error={error} title={handoverWords.theHandoverCouldNot} className="mb-4" />
       <div className="grid gap-5 lg:grid-cols-[minmax(0,1fr)_340px] xl:grid-cols-[200px_minmax(0,1fr)_340px]">
         <div className="lg:col-span-2 xl:col-span-1">
           <Steps site={page.site.id} steps={page.site.steps} here="handover" />
@@ -199,13 +204,13 @@ export function Handover({ initial, mayMake }: Props) {
           {open.length > 0 && (
             <Sheet
               id="blocks"
-              title="What blocks it"
+              title={handoverWords.whatBlocksIt}
               aside={
                 <a
                   href={paths.commissioningSite(page.site.id)}
                   className="target inline-flex items-center text-petrol hover:underline"
                 >
-                  Settle or accept
+                  {handoverWords.settleOrAccept}
                 </a>
               }
             >
@@ -218,11 +223,11 @@ export function Handover({ initial, mayMake }: Props) {
           )}
           <Sheet
             id="packs"
-            title="Papers"
-            aside={page.packs.length > 0 && counted(page.packs.length, 'version')}
+            title={handoverWords.papers}
+            aside={page.packs.length > 0 && handoverWords.countedPacksVersion(page.packs.length)}
           >
             {page.packs.length === 0 ? (
-              <Notice kind="empty" title="No pack has been made" />
+              <Notice kind="empty" title={handoverWords.noPackHasBeen} />
             ) : (
               <ul>
                 {page.packs.map((pack) => (
@@ -236,12 +241,8 @@ export function Handover({ initial, mayMake }: Props) {
           {mayMake && open.length === 0 && (
             <MakePanel page={page} onMade={() => void client.invalidateQueries({ queryKey: key })} />
           )}
-          <Sheet id="inside" title="What a pack holds">
-            <p className="text-ink-2">
-              System data, people, single-line description, string layout with serials, equipment, operation
-              and maintenance, test results, install checks with photos, open points; the as-built as CSV.
-              Each page carries the fingerprint of the data.
-            </p>
+          <Sheet id="inside" title={handoverWords.whatAPackHolds}>
+            <p className="text-ink-2">{handoverWords.systemDataPeopleSingle}</p>
           </Sheet>
         </div>
       </div>

@@ -1,7 +1,8 @@
 import { Sheet } from '../../components/ui/Sheet';
 import { Table } from '../../components/ui/Table';
-import { counted, number } from '../../drawings/numbers';
+import { number } from '../../drawings/numbers';
 import type { CheckedHistory } from './desk';
+import { badCellsSheet } from '../../words/history-import';
 
 /** Cells that can't be read: where, what stands there, why, and what would do. */
 export function BadCellsSheet({ checked, headers }: { checked: CheckedHistory; headers: readonly string[] }) {
@@ -10,50 +11,48 @@ export function BadCellsSheet({ checked, headers }: { checked: CheckedHistory; h
     <Sheet
       id="bad-cells"
       flush
-      title="Cells that would be left out"
+      title={badCellsSheet.cellsThatWouldBe}
       aside={
         leftOut > faults.length
-          ? `the first ${number(faults.length)} of ${number(leftOut)}`
-          : counted(leftOut, 'cell')
+          ? badCellsSheet.theFirstOf(faults.length, leftOut)
+          : badCellsSheet.countedLeftOutCell(leftOut)
       }
     >
-      <p className="mb-3 text-[15px] text-ink-2">
-        Mend them in the file and choose it again, or import the rest without them.
-      </p>
+      <p className="mb-3 text-[15px] text-ink-2">{badCellsSheet.mendThemInThe}</p>
       <Table
-        caption="Cells that would be left out"
+        caption={badCellsSheet.cellsThatWouldBe}
         rows={faults}
         rowKey={(f) => `${f.row} ${f.column} ${f.message}`}
         columns={[
           {
             key: 'row',
-            label: 'Row',
+            label: badCellsSheet.row,
             numeric: true,
             cell: (f) => number(f.row),
           },
           {
             key: 'column',
-            label: 'Column',
+            label: badCellsSheet.column,
             from: 'sm',
-            cell: (f) => headers[f.column] ?? `column ${f.column + 1}`,
+            cell: (f) => headers[f.column] ?? badCellsSheet.columnColumn(f.column),
           },
           {
             key: 'cell',
-            label: 'Cell',
+            label: badCellsSheet.cell,
             from: 'md',
-            cell: (f) => <code className="text-sm">{f.cell || 'empty'}</code>,
+            cell: (f) => <code className="text-sm">{f.cell || badCellsSheet.empty}</code>,
           },
           {
             key: 'why',
-            label: 'Why, and what would do',
+            label: badCellsSheet.whyAndWhatWould,
             cell: (f) => (
               <>
                 <span className="block text-sm text-ink-2 sm:hidden">
-                  {headers[f.column] ?? `column ${f.column + 1}`}
+                  {headers[f.column] ?? badCellsSheet.columnColumn(f.column)}
                 </span>
                 <span className="font-medium text-rust-ink">{f.message}.</span>{' '}
                 <span className="text-ink-2">
-                  {f.remedy} {f.leaves === 'row' ? 'The row is left out.' : 'The cell alone is left out.'}
+                  {f.remedy} {f.leaves === 'row' ? badCellsSheet.theRowIsLeft : badCellsSheet.theCellAloneIs}
                 </span>
               </>
             ),

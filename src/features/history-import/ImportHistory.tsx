@@ -11,6 +11,7 @@ import { LayoutSheet } from './LayoutSheet';
 import { PreviewSheet } from './PreviewSheet';
 import { useHistoryImport } from './use-history-import';
 import { finding } from './words';
+import { importHistory } from '../../words/history-import';
 
 /** Readings of the time before Wakeline: read, looked at, kept, and taken back where they are not right. */
 export function ImportHistory({ initial }: { initial: HistoryPage }) {
@@ -29,9 +30,9 @@ export function ImportHistory({ initial }: { initial: HistoryPage }) {
     <>
       <Heading
         crumbs={[
-          { label: 'Fleet', href: paths.fleet() },
+          { label: importHistory.fleet, href: paths.fleet() },
           { label: name, href: paths.site(id) },
-          { label: 'Earlier readings' },
+          { label: importHistory.earlierReadings },
         ]}
         finding={said.heading}
         sentence={said.sentence}
@@ -45,7 +46,7 @@ export function ImportHistory({ initial }: { initial: HistoryPage }) {
             words={busy.words}
             share={busy.share}
             onStop={busy.stop ?? undefined}
-            stopWords="Stop: keep nothing of it"
+            stopWords={importHistory.stopKeepNothingOf}
           />
         )}
         {error && (
@@ -63,10 +64,10 @@ export function ImportHistory({ initial }: { initial: HistoryPage }) {
         {made && (
           <Notice
             kind="done"
-            title="All of it is kept"
-            action={<ButtonLink href={paths.site(id)}>Look at the site</ButtonLink>}
+            title={importHistory.allOfItIs}
+            action={<ButtonLink href={paths.site(id)}>{importHistory.lookAtTheSite}</ButtonLink>}
           >
-            Strings show it in their history, marked as imported. It can be taken back below.
+            {importHistory.stringsShowItIn}
           </Notice>
         )}
         {/* while a file is being sent nothing may change what is sent */}
@@ -89,13 +90,7 @@ export function ImportHistory({ initial }: { initial: HistoryPage }) {
             />
           )}
           <FileSheet
-            hint={
-              <>
-                One row a time, with a column for each string; or one row a string and time. Voltage, current,
-                power, energy or temperature of strings, single units, inputs or inverters, by the names of
-                the as-built.
-              </>
-            }
+            hint={<>{importHistory.oneRowATime}</>}
             name={work.name}
             facts={facts}
             fault={work.fileFault}

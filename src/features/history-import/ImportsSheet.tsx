@@ -7,10 +7,11 @@ import { Sheet } from '../../components/ui/Sheet';
 import { Table } from '../../components/ui/Table';
 import { Tag } from '../../components/ui/Tag';
 import { SiteTime } from '../../components/ui/Time';
-import { counted, listed, number } from '../../drawings/numbers';
+import { listed, number } from '../../drawings/numbers';
 import { ApiError } from '../../lib/api';
 import type { HistoryImportView } from '../../schemas/api/history-import';
 import { span } from './words';
+import { importsSheet } from '../../words/history-import';
 
 interface Props {
   imports: readonly HistoryImportView[];
@@ -20,22 +21,22 @@ interface Props {
   onUndo: (id: string, reason: string) => Promise<void>;
 }
 const ofWords = (of: readonly string[]): string =>
-  of.length <= 3 ? listed(of) : `${of.slice(0, 2).join(', ')} and ${of.length - 2} more`;
+  of.length <= 3 ? listed(of) : importsSheet.andMore(of.slice(0, 2).join(', '), of.length);
 
 /** What was imported before, each with its way back. */
 export function ImportsSheet({ imports, now, timeZone, onUndo }: Props) {
   const [undoing, setUndoing] = useState<HistoryImportView | null>(null);
   return (
-    <Sheet id="imports" flush title="Imported files" aside="newest first">
+    <Sheet id="imports" flush title={importsSheet.importedFiles} aside={importsSheet.newestFirst}>
       <Table<HistoryImportView>
-        caption="Imported files"
+        caption={importsSheet.importedFiles}
         rows={imports}
         rowKey={(i) => i.id}
-        empty={<Notice kind="empty" title="No file has been imported at this site" />}
+        empty={<Notice kind="empty" title={importsSheet.noFileHasBeen} />}
         columns={[
           {
             key: 'file',
-            label: 'File',
+            label: importsSheet.file,
             cell: (i) => (
               <>
                 <span className="break-all font-medium">{i.fileName}</span>
@@ -48,7 +49,7 @@ export function ImportsSheet({ imports, now, timeZone, onUndo }: Props) {
           },
           {
             key: 'what',
-            label: 'What',
+            label: importsSheet.what,
             from: 'sm',
             cell: (i) => (
               <>
@@ -61,25 +62,25 @@ export function ImportsSheet({ imports, now, timeZone, onUndo }: Props) {
           },
           {
             key: 'readings',
-            label: 'Readings',
+            label: importsSheet.readings,
             numeric: true,
             cell: (i) => (
               <>
                 {number(i.readings)}
                 {i.leftOut > 0 && (
-                  <span className="block text-sm text-ink-2">{counted(i.leftOut, 'cell')} left out</span>
+                  <span className="block text-sm text-ink-2">{importsSheet.leftOut(i.leftOut)}</span>
                 )}
               </>
             ),
           },
           {
             key: 'state',
-            label: 'State',
+            label: importsSheet.state,
             numeric: true,
             cell: (i) =>
               i.undoneAt ? (
                 <>
-                  <Tag shape="×">taken back</Tag>
+                  <Tag shape="×">{importsSheet.takenBack}</Tag>
                   <span className="block text-sm text-ink-2">
                     {i.undoneBy}, <SiteTime at={i.undoneAt} now={now} timeZone={timeZone} />
                   </span>
@@ -88,10 +89,10 @@ export function ImportsSheet({ imports, now, timeZone, onUndo }: Props) {
                 <button
                   type="button"
                   className="target px-1 text-petrol hover:underline"
-                  aria-label={`Take ${i.fileName} back`}
+                  aria-label={importsSheet.takeBack2(i.fileName)}
                   onClick={() => setUndoing(i)}
                 >
-                  Take back
+                  {importsSheet.takeBack}
                 </button>
               ),
           },
@@ -117,12 +118,12 @@ function UndoDialog({
       await onUndo(made.id, reason);
       onClose();
     } catch (error) {
-      setFailed(error instanceof ApiError ? error.message : 'It could not be taken back. Try again.');
+      setFailed(error instanceof ApiError ? error.message : importsSheet.itCouldNotBe);
       setBusy(false);
     }
   };
   return (
-    <Dialog open title={`Take ${made.fileName} back`} onClose={onClose}>
+    <Dialog open title={importsSheet.takeBack2(made.fileName)} onClose={onClose}>
       <form
         className="grid gap-4"
         onSubmit={(event) => {
@@ -130,27 +131,24 @@ function UndoDialog({
           void undo();
         }}
       >
-        <p>
-          Its {counted(made.readings, 'reading')} go from every page and figure. What Wakeline measured stays,
-          and so do other imports. The file can be imported again.
-        </p>
+        <p>{importsSheet.itsGoFromEvery(made.readings)}</p>
         <Field
-          label="Why"
+          label={importsSheet.why}
           value={reason}
           maxLength={500}
           onChange={(event) => setReason(event.target.value)}
-          hint="A few words, if you like; they stay in the audit."
+          hint={importsSheet.aFewWordsIf}
         />
         {failed && (
-          <Notice kind="failed" title="It was not taken back">
+          <Notice kind="failed" title={importsSheet.itWasNotTaken}>
             {failed}
           </Notice>
         )}
         <div className="flex flex-wrap gap-2">
           <Button weight="primary" type="submit" disabled={busy}>
-            {busy ? 'Taking back …' : 'Take it back'}
+            {busy ? importsSheet.takingBack : importsSheet.takeItBack}
           </Button>
-          <Button onClick={onClose}>Keep it</Button>
+          <Button onClick={onClose}>{importsSheet.keepIt}</Button>
         </div>
       </form>
     </Dialog>

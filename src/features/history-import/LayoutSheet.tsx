@@ -15,6 +15,7 @@ import {
 } from '../../domain/history-import/layout';
 import type { HistoryFacts } from './desk';
 import { isQuantityName, subjectOptions, columnOptions } from './words';
+import { layoutSheet } from '../../words/history-import';
 
 interface Props {
   facts: HistoryFacts;
@@ -51,32 +52,32 @@ export function LayoutSheet({ facts, layout, known, siteZone, timeZones, wrong, 
   };
   const zones = [...new Set([siteZone, 'UTC', ...timeZones])];
   return (
-    <Sheet id="columns" title="Columns, clock and numbers">
+    <Sheet id="columns" title={layoutSheet.columnsClockAndNumbers}>
       <div className="mb-6 grid gap-x-8 gap-y-3 md:grid-cols-3">
         <Choice
-          label="Times follow the clock of"
+          label={layoutSheet.timesFollowTheClock}
           value={layout.timeZone}
-          options={zones.map((z) => ({ value: z, label: z === siteZone ? `${z} (the site)` : z }))}
+          options={zones.map((z) => ({ value: z, label: z === siteZone ? layoutSheet.theSite(z) : z }))}
           onChange={(timeZone) => onLayout({ ...layout, timeZone })}
-          hint="Times that name a zone themselves, such as 14:15+01:00, keep it."
+          hint={layoutSheet.timesThatNameA}
         />
         <Choice
-          label="In 3/4/2026"
+          label={layoutSheet.in342026}
           value={layout.dayFirst === null ? '' : layout.dayFirst ? 'day' : 'month'}
           options={[
-            { value: '', label: 'as the dates show' },
-            { value: 'day', label: 'the day comes first' },
-            { value: 'month', label: 'the month comes first' },
+            { value: '', label: layoutSheet.asTheDatesShow },
+            { value: 'day', label: layoutSheet.theDayComesFirst },
+            { value: 'month', label: layoutSheet.theMonthComesFirst },
           ]}
           onChange={(v) => onLayout({ ...layout, dayFirst: v === '' ? null : v === 'day' })}
         />
         <Choice
-          label="Before decimals stands"
+          label={layoutSheet.beforeDecimalsStands}
           value={layout.decimalMark ?? ''}
           options={[
-            { value: '', label: 'what the numbers show' },
-            { value: 'point', label: 'a point: 410.5' },
-            { value: 'comma', label: 'a comma: 410,5' },
+            { value: '', label: layoutSheet.whatTheNumbersShow },
+            { value: 'point', label: layoutSheet.aPoint4105 },
+            { value: 'comma', label: layoutSheet.aComma4105 },
           ]}
           onChange={(v) => onLayout({ ...layout, decimalMark: v === 'point' || v === 'comma' ? v : null })}
         />
@@ -101,14 +102,14 @@ export function LayoutSheet({ facts, layout, known, siteZone, timeZones, wrong, 
                 value={isQuantity(use) ? `${use.as}:${use.unit}` : use.as}
                 options={USES}
                 onChange={(value) => choose(i, value)}
-                hint={shown.length > 0 ? shown.join(' · ') : 'empty in the first rows'}
+                hint={shown.length > 0 ? shown.join(' · ') : layoutSheet.emptyInTheFirst}
               />
               {isQuantity(use) && (
                 <Choice
                   className="mt-2"
                   inline
-                  label="of"
-                  aria-label={`${header}: of what`}
+                  label={layoutSheet.of}
+                  aria-label={layoutSheet.ofWhat(header)}
                   value={use.of ? subjectKey(use.of) : ''}
                   options={subjectOptions(subjects, subjectWords, namesRows(layout))}
                   onChange={(key) =>

@@ -3,9 +3,10 @@ import { Button } from '../../components/ui/Button';
 import { Field } from '../../components/ui/Field';
 import { Sheet } from '../../components/ui/Sheet';
 import { Table } from '../../components/ui/Table';
-import { counted, number } from '../../drawings/numbers';
+import { number } from '../../drawings/numbers';
 import type { CheckedHistory } from './desk';
 import { span } from './words';
+import { previewSheet } from '../../words/history-import';
 
 interface Props {
   checked: CheckedHistory;
@@ -21,15 +22,20 @@ export function PreviewSheet({ checked, timeZone, busy, onImport }: Props) {
   const [all, setAll] = useState(false);
   const { series } = checked;
   return (
-    <Sheet id="preview" flush title="What would come in" aside={counted(checked.rows, 'row')}>
+    <Sheet
+      id="preview"
+      flush
+      title={previewSheet.whatWouldComeIn}
+      aside={previewSheet.countedRowsRow(checked.rows)}
+    >
       <Table
-        caption="Readings by string, unit, input and inverter"
+        caption={previewSheet.readingsByStringUnit}
         rows={all ? series : series.slice(0, SHOWN)}
         rowKey={(s) => s.words}
         columns={[
           {
             key: 'of',
-            label: 'Of',
+            label: previewSheet.of,
             cell: (s) => (
               <>
                 <span className="font-medium">{s.words}</span>
@@ -37,24 +43,22 @@ export function PreviewSheet({ checked, timeZone, busy, onImport }: Props) {
               </>
             ),
           },
-          { key: 'what', label: 'What', from: 'sm', cell: (s) => s.quantities.join(', ') },
-          { key: 'readings', label: 'Readings', numeric: true, cell: (s) => number(s.readings) },
+          { key: 'what', label: previewSheet.what, from: 'sm', cell: (s) => s.quantities.join(', ') },
+          { key: 'readings', label: previewSheet.readings, numeric: true, cell: (s) => number(s.readings) },
           {
             key: 'when',
-            label: 'From and to, at the site',
+            label: previewSheet.fromAndToAt,
             cell: (s) => span(s.from * 1000, s.to * 1000, timeZone),
           },
         ]}
       />
       {series.length > SHOWN && !all && (
         <Button className="mt-3" onClick={() => setAll(true)}>
-          Show all {number(series.length)}
+          {previewSheet.showAll(series.length)}
         </Button>
       )}
       {checked.doubles > 0 && (
-        <p className="mt-3 text-[15px]">
-          {counted(checked.doubles, 'reading')} of an instant that came before: the first one counts.
-        </p>
+        <p className="mt-3 text-[15px]">{previewSheet.ofAnInstantThat(checked.doubles)}</p>
       )}
       <form
         className="mt-5 grid gap-4 border-t border-rule pt-4 md:grid-cols-[minmax(0,420px)_auto] md:items-end"
@@ -64,15 +68,15 @@ export function PreviewSheet({ checked, timeZone, busy, onImport }: Props) {
         }}
       >
         <Field
-          label="Where they come from"
+          label={previewSheet.whereTheyComeFrom}
           value={note}
           maxLength={500}
           onChange={(event) => setNote(event.target.value)}
-          placeholder="the logger before ours, portal export, …"
+          placeholder={previewSheet.theLoggerBeforeOurs}
         />
         <Button weight="primary" type="submit" disabled={busy} className="justify-self-start">
-          Import {counted(checked.readings, 'reading')}
-          {checked.leftOut > 0 && `, leave ${counted(checked.leftOut, 'cell')} out`}
+          {previewSheet.importReadings(checked.readings)}
+          {checked.leftOut > 0 && previewSheet.leaveOut(checked.leftOut)}
         </Button>
       </form>
     </Sheet>

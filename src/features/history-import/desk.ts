@@ -13,6 +13,7 @@ import {
 import { guessLayout, looksLikeHeader } from '../../domain/history-import/match';
 import { breaksInside, HistoryReader, type HistoryFault } from '../../domain/history-import/read';
 import type { HistoryOrder } from '../../schemas/api/history-import';
+import { historyImportDesk } from '../../words/history-import';
 
 export interface HistoryFacts extends TableFacts {
   /** The first rows of values. */
@@ -107,7 +108,7 @@ export class HistoryDesk {
       separator,
       rows: hasHeader ? rows - 1 : rows,
       emptyLines,
-      headers: named.map((n, i) => n || `column ${i + 1}`),
+      headers: named.map((n, i) => n || historyImportDesk.columnI(i)),
       hasHeader,
       samples,
       faults,
@@ -177,7 +178,7 @@ export class HistoryDesk {
       step: ({ data, errors, meta }) => {
         const at = line;
         line += 1 + breaksInside(data);
-        const broken = errors.length > 0 ? 'quotes around a cell must be its first and last mark' : null;
+        const broken = errors.length > 0 ? historyImportDesk.quotesAroundACell : null;
         const empty = data.every((cell) => cell.trim() === '');
         // what follows the last line break is no line
         if (!empty || meta.cursor < this.text.length) onRow(empty ? null : data, at, broken);

@@ -2,11 +2,12 @@ import { api, ApiError, errorOf } from '../../lib/api';
 import { linesOf } from '../../lib/ndjson';
 import type { HistoryImportView, HistoryLine, HistoryStep } from '../../schemas/api/history-import';
 import { paths } from '../../schemas/paths';
+import { historyImportSend } from '../../words/history-import';
 
 const BROKEN = new ApiError(
   0,
-  'The connection broke before the server had answered',
-  'Nothing is half done: either all of the file is kept or nothing of it. Load the page again to see which.',
+  historyImportSend.theConnectionBrokeBefore,
+  historyImportSend.nothingIsHalfDone,
 );
 
 /**

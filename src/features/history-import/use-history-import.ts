@@ -11,13 +11,14 @@ import type { CheckedHistory, HistoryFacts } from './desk';
 import { DeskClient } from './desk-client';
 import { sendHistory, takeBack } from './send';
 import { STEP_WORDS } from './words';
+import { historyImportUseHistoryImport } from '../../words/history-import';
 
 export interface Busy {
   words: string;
   share: number | null;
   stop: (() => void) | null;
 }
-const PASTED = 'pasted cells';
+const PASTED = historyImportUseHistoryImport.pastedCells;
 
 /** One import from the file to what is kept, and what was imported before. */
 export function useHistoryImport(initial: HistoryPage) {
@@ -47,7 +48,7 @@ export function useHistoryImport(initial: HistoryPage) {
   const failed = (fault: unknown) => setFileFault(fault instanceof Error ? fault.message : String(fault));
   const check = async (wanted: Layout) => {
     const mine = ++turn.current;
-    const words = 'Checking the cells';
+    const words = historyImportUseHistoryImport.checkingTheCells;
     setBusy({ words, share: null, stop: null });
     setChecked(null);
     setError(null);
@@ -90,7 +91,7 @@ export function useHistoryImport(initial: HistoryPage) {
 
   const take = async (title: string, content: () => Promise<Uint8Array | string>) => {
     begin(title);
-    const words = 'Reading the file';
+    const words = historyImportUseHistoryImport.readingTheFile;
     setBusy({ words, share: null, stop: null });
     try {
       const { known, site } = initial;
@@ -107,7 +108,7 @@ export function useHistoryImport(initial: HistoryPage) {
     if (file.size > HISTORY_FILE_MAX_BYTES) {
       begin(file.name);
       setFileFault(
-        `It has ${Math.round(file.size / 1024 / 1024)} MB, and ${HISTORY_FILE_MAX_BYTES / 1024 / 1024} MB is the most. Import it in parts, such as a year at a time.`,
+        historyImportUseHistoryImport.itHasMBAnd(Math.round(file.size / 1024 / 1024), HISTORY_FILE_MAX_BYTES),
       );
       return;
     }
@@ -130,7 +131,7 @@ export function useHistoryImport(initial: HistoryPage) {
     abort.current = control;
     const stop = () => control.abort();
     setError(null);
-    setBusy({ words: 'Sending the file', share: null, stop });
+    setBusy({ words: historyImportUseHistoryImport.sendingTheFile, share: null, stop });
     try {
       const { rows, readings, leftOut } = checked;
       const order = {
@@ -156,8 +157,8 @@ export function useHistoryImport(initial: HistoryPage) {
           ? fault
           : new ApiError(
               0,
-              'Stopped',
-              'Nothing of the file is kept, unless the server had finished already.',
+              historyImportUseHistoryImport.stopped,
+              historyImportUseHistoryImport.nothingOfTheFile,
             ),
       );
     } finally {

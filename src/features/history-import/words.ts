@@ -5,22 +5,23 @@ import {
   type Subject,
   subjectKey,
 } from '../../domain/history-import/layout';
-import { counted, listed } from '../../drawings/numbers';
+import { listed } from '../../drawings/numbers';
 import { longDate } from '../../drawings/times';
 import type { HistoryImportView, HistoryStep } from '../../schemas/api/history-import';
 import type { CheckedHistory } from './desk';
+import { historyImportWords } from '../../words/history-import';
 
 export const STEP_WORDS: Record<HistoryStep, string> = {
-  reading: 'The server reads and keeps the rows',
-  adding_up: 'Adding up days',
-  kept: 'Keeping all of it',
+  reading: historyImportWords.theServerReadsAnd,
+  adding_up: historyImportWords.addingUpDays,
+  kept: historyImportWords.keepingAllOfIt,
 };
 
 /** "1 January 2024 to 31 December 2024", or the one day. */
 export function span(fromMs: number, toMs: number, timeZone: string): string {
   const from = longDate(fromMs, timeZone);
   const to = longDate(toMs, timeZone);
-  return from === to ? from : `${from} to ${to}`;
+  return from === to ? from : historyImportWords.fromToTo(from, to);
 }
 
 export interface Standing {
@@ -39,55 +40,56 @@ export function finding({ imports, rows, layoutFault, checked, made, timeZone }:
 } {
   if (made)
     return {
-      heading: `${counted(made.readings, 'reading')} ${made.readings === 1 ? 'is' : 'are'} imported`,
-      sentence: `${span(Date.parse(made.from), Date.parse(made.to), timeZone)}: ${listed(made.of.slice(0, 5))}${made.of.length > 5 ? ` and ${made.of.length - 5} more` : ''}. Pages show them where Wakeline measured nothing, and mark them.`,
+      heading: historyImportWords.readingsReadingsImported(made.readings),
+      sentence: historyImportWords.spanListedSaidN5(
+        span(Date.parse(made.from), Date.parse(made.to), timeZone),
+        listed(made.of.slice(0, 5)),
+        made.of.length,
+      ),
     };
   if (rows === null) {
     const inForce = imports.filter((i) => i.undoneAt === null);
     return {
       heading:
         inForce.length === 0
-          ? 'Earlier readings are not imported yet'
-          : `${counted(
+          ? historyImportWords.earlierReadingsAreNot
+          : historyImportWords.reduceFromInForce(
               inForce.reduce((n, i) => n + i.readings, 0),
-              'earlier reading',
-            )} from ${counted(inForce.length, 'file')}`,
-      sentence:
-        'Choose a CSV of an earlier logger, or paste from a spreadsheet. Nothing is kept before you have seen what would come in, and each import can be taken back.',
+              inForce.length,
+            ),
+      sentence: historyImportWords.chooseACSVOf,
     };
   }
-  if (layoutFault)
-    return { heading: `${counted(rows, 'row')} read; their columns need a word`, sentence: layoutFault };
+  if (layoutFault) return { heading: historyImportWords.readTheirColumnsNeed(rows), sentence: layoutFault };
   if (!checked)
     return {
-      heading: `Checking ${counted(rows, 'row')}`,
-      sentence: 'Every cell is looked at; nothing is kept.',
+      heading: historyImportWords.checkingRows(rows),
+      sentence: historyImportWords.everyCellIsLooked,
     };
   if (checked.readings === 0)
     return {
-      heading: 'No reading could be read from this file',
-      sentence:
-        'Look at the columns, the time zone and the names below: each row says what is wrong with it.',
+      heading: historyImportWords.noReadingCouldBe,
+      sentence: historyImportWords.lookAtTheColumns,
     };
   const period =
     checked.from === null || checked.to === null
       ? ''
       : span(checked.from * 1000, checked.to * 1000, timeZone);
   return {
-    heading: `${counted(checked.readings, 'reading')} would come in`,
+    heading: historyImportWords.wouldComeIn(checked.readings),
     sentence:
       checked.leftOut === 0
-        ? `${period}. Every cell could be read.`
-        : `${period}. ${counted(checked.leftOut, 'cell')} can't be read and would be left out: they are listed below.`,
+        ? historyImportWords.everyCellCouldBe(period)
+        : historyImportWords.cantBeReadAnd(period, checked.leftOut),
   };
 }
 
 /** Choices of what a column is: its place, or a quantity in a unit. */
 export const columnOptions = (places: readonly { value: string; label: string }[]) => [
-  { value: 'nothing', label: 'not used' },
+  { value: 'nothing', label: historyImportWords.notUsed },
   ...places,
   ...QUANTITIES.flatMap((q) =>
-    UNITS[q].map(({ unit }) => ({ value: `${q}:${unit}`, label: `${q} in ${unit}` })),
+    UNITS[q].map(({ unit }) => ({ value: `${q}:${unit}`, label: historyImportWords.qInUnit(q, unit) })),
   ),
 ];
 
@@ -99,6 +101,6 @@ export const subjectOptions = (
   words: (s: Subject) => string,
   rowsNamed: boolean,
 ) => [
-  { value: '', label: rowsNamed ? 'what the row names' : 'choose of what' },
+  { value: '', label: rowsNamed ? historyImportWords.whatTheRowNames : historyImportWords.chooseOfWhat },
   ...subjects.map((s) => ({ value: subjectKey(s), label: words(s) })),
 ];

@@ -8,6 +8,7 @@ import { Table } from '../../components/ui/Table';
 import { number } from '../../drawings/numbers';
 import type { ChangeKind, ImportOutcome } from '../../schemas/api/import';
 import { CHANGE_NAMES, changePlace, changeWords } from './words';
+import { changesSheet } from '../../words/import';
 
 interface Props {
   outcome: ImportOutcome;
@@ -28,17 +29,17 @@ export function ChangesSheet({ outcome, reason, onReason, reasonFault, busy, onI
   return (
     <Sheet
       id="changes"
-      title="What would change"
-      aside={`${number(outcome.unchanged)} rows stay as they are`}
+      title={changesSheet.whatWouldChange}
+      aside={changesSheet.rowsStayAsThey(outcome.unchanged)}
     >
       {kinds.length > 1 && (
         <div className="mb-2">
           <Segmented
-            label="Kind of change"
+            label={changesSheet.kindOfChange}
             value={kind}
             onChange={setKind}
             options={[
-              { value: 'all', label: `All ${number(total)}` },
+              { value: 'all', label: changesSheet.allTotal(total) },
               ...kinds.map(([k, n]) => ({ value: k, label: CHANGE_NAMES[k](n) })),
             ]}
           />
@@ -48,54 +49,50 @@ export function ChangesSheet({ outcome, reason, onReason, reasonFault, busy, onI
         className="max-h-[420px] overflow-y-auto border-y border-rule"
         tabIndex={0}
         role="region"
-        aria-label="Changes"
+        aria-label={changesSheet.changes}
       >
         <Table
-          caption="Changes, gravest first"
+          caption={changesSheet.changesGravestFirst}
           rows={list}
           rowKey={(c) => `${c.kind} ${changePlace(c)}`}
           columns={[
-            { key: 'place', label: 'Where', cell: (c) => changePlace(c) },
-            { key: 'what', label: 'What', cell: (c) => changeWords(c) },
+            { key: 'place', label: changesSheet.where, cell: (c) => changePlace(c) },
+            { key: 'what', label: changesSheet.what, cell: (c) => changeWords(c) },
             {
               key: 'row',
-              label: 'Row',
+              label: changesSheet.row,
               numeric: true,
               from: 'sm',
               cell: (c) => ('line' in c ? number(c.line) : ''),
             },
           ]}
-          empty={<p className="py-3 text-ink-2">None of this kind is among the first listed.</p>}
+          empty={<p className="py-3 text-ink-2">{changesSheet.noneOfThisKind}</p>}
         />
       </div>
       {total > outcome.changes.length && (
         <p className="mt-2 text-sm text-ink-2">
-          The gravest {number(outcome.changes.length)} of {number(total)} are listed.
+          {changesSheet.theGravestOfAre(outcome.changes.length, total)}
         </p>
       )}
       {leaving > 0 && (
         <div className="mt-4">
-          <Notice
-            kind="stale"
-            title={`${number(leaving)} ${leaving === 1 ? 'unit leaves its' : 'units leave their'} slot`}
-          >
-            Compare with the roof before you go on: the as-built must say what is installed. The history keeps
-            where each was.
+          <Notice kind="stale" title={changesSheet.leavingLeavingSlot(leaving)}>
+            {changesSheet.compareWithTheRoof}
           </Notice>
         </div>
       )}
       <div className="mt-4 grid items-end gap-4 sm:grid-cols-[minmax(260px,480px)_auto] sm:justify-start">
         <Field
-          label="Why"
+          label={changesSheet.why}
           value={reason}
           onChange={(event) => onReason(event.target.value)}
           maxLength={500}
-          hint="It stays in the history, with your name and the time."
-          placeholder="As installed, list of 30 November"
+          hint={changesSheet.itStaysInThe}
+          placeholder={changesSheet.asInstalledListOf}
           error={reasonFault}
         />
         <Button weight="primary" disabled={busy} onClick={onImport} className="sm:mb-6">
-          Import {number(outcome.rows)} {outcome.rows === 1 ? 'row' : 'rows'}
+          {changesSheet.importRowsRows(outcome.rows)}
         </Button>
       </div>
     </Sheet>

@@ -8,6 +8,7 @@ import {
   type ImportColumn,
 } from '../../domain/commissioning/import/columns';
 import type { FileFacts } from './desk';
+import { columnsSheet } from '../../words/import';
 
 interface Props {
   facts: FileFacts;
@@ -25,11 +26,9 @@ export function ColumnsSheet({ facts, match, onMatch }: Props) {
   return (
     <Sheet
       id="columns"
-      title="Columns"
+      title={columnsSheet.columns}
       aside={
-        unused.length > 0
-          ? `Not used: ${unused.slice(0, 6).join(', ')}${unused.length > 6 ? ' …' : ''}`
-          : undefined
+        unused.length > 0 ? columnsSheet.notUsed(unused.slice(0, 6).join(', '), unused.length) : undefined
       }
     >
       <div className="grid gap-x-8 gap-y-3 md:grid-cols-2 xl:grid-cols-3">
@@ -43,10 +42,10 @@ export function ColumnsSheet({ facts, match, onMatch }: Props) {
           return (
             <Choice
               key={column}
-              label={`${COLUMN_LABELS[column]}${needed ? ' (needed)' : ''}`}
+              label={columnsSheet.columnNeeded(COLUMN_LABELS[column], needed)}
               value={index === null ? '' : String(index)}
               options={[
-                { value: '', label: needed ? 'choose a column' : 'not in the file' },
+                { value: '', label: needed ? columnsSheet.chooseAColumn : columnsSheet.notInTheFile },
                 ...facts.headers.map((header, i) => ({ value: String(i), label: header })),
               ]}
               onChange={(value) => onMatch(column, value === '' ? null : Number(value))}
@@ -54,7 +53,11 @@ export function ColumnsSheet({ facts, match, onMatch }: Props) {
                 needed && index === null ? `Choose the column that holds the ${COLUMN_LABELS[column]}.` : null
               }
               hint={
-                index === null ? undefined : shown.length > 0 ? shown.join(' · ') : 'empty in the first rows'
+                index === null
+                  ? undefined
+                  : shown.length > 0
+                    ? shown.join(' · ')
+                    : columnsSheet.emptyInTheFirst
               }
             />
           );

@@ -13,6 +13,7 @@ import {
 import { number } from '../../drawings/numbers';
 import { paths } from '../../schemas/paths';
 import type { CheckedFile } from './desk';
+import { decisionsSheet } from '../../words/import';
 
 interface Props {
   site: string;
@@ -60,18 +61,18 @@ export function DecisionsSheet({ site, names, checked, choices, onChoices }: Pro
       meanings: { ...choices.meanings, [column]: { ...choices.meanings[column], [bareName(text)]: ours } },
     });
   return (
-    <Sheet id="decisions" title="What only you can say">
+    <Sheet id="decisions" title={decisionsSheet.whatOnlyYouCan}>
       <div className="grid gap-6">
         {(askMark || askFill) && (
           <div className="grid items-end gap-4 sm:grid-cols-2 lg:grid-cols-3">
             {askMark && (
               <Choice
-                label="Before the decimals stands"
+                label={decisionsSheet.beforeTheDecimalsStands}
                 value={choices.decimalMark ?? ''}
                 options={[
-                  { value: '', label: 'choose: 1,234 has two meanings' },
-                  { value: 'comma', label: 'a comma: 1,234 is a little over one' },
-                  { value: 'point', label: 'a point: 1,234 is over a thousand' },
+                  { value: '', label: decisionsSheet.choose1234Has },
+                  { value: 'comma', label: decisionsSheet.aComma1234 },
+                  { value: 'point', label: decisionsSheet.aPoint1234 },
                 ]}
                 onChange={(v) =>
                   onChoices({ ...choices, decimalMark: v === 'comma' || v === 'point' ? v : null })
@@ -86,14 +87,14 @@ export function DecisionsSheet({ site, names, checked, choices, onChoices }: Pro
                   checked={choices.fillDown}
                   onChange={(event) => onChoices({ ...choices, fillDown: event.target.checked })}
                 />
-                Blank string cells mean the string above
+                {decisionsSheet.blankStringCellsMean}
               </label>
             )}
           </div>
         )}
         {(checked.unknownNames.length > 0 || meant) && (
           <div>
-            <h3 className="mb-2 text-[15px]">Names in the file that mean nothing here yet</h3>
+            <h3 className="mb-2 text-[15px]">{decisionsSheet.namesInTheFile}</h3>
             <div className="grid gap-4 sm:grid-cols-2 lg:grid-cols-3">
               {checked.unknownNames.slice(0, 30).map(({ column, text, rows, suggestion }) => (
                 <Choice
@@ -101,14 +102,14 @@ export function DecisionsSheet({ site, names, checked, choices, onChoices }: Pro
                   label={`${COLUMN_LABELS[column]} “${text}”`}
                   value=""
                   options={[
-                    { value: '', label: 'which one is meant?' },
+                    { value: '', label: decisionsSheet.whichOneIsMeant },
                     ...namesOf(names, column).map((n) => ({
                       value: n,
-                      label: n === suggestion ? `${n} (likely)` : n,
+                      label: n === suggestion ? decisionsSheet.nLikely(n) : n,
                     })),
                   ]}
                   onChange={(ours) => setMeaning(column, text, ours)}
-                  hint={`in ${number(rows)} ${rows === 1 ? 'row' : 'rows'}`}
+                  hint={decisionsSheet.inRowsRows(rows)}
                 />
               ))}
             </div>
@@ -118,7 +119,8 @@ export function DecisionsSheet({ site, names, checked, choices, onChoices }: Pro
                   Object.entries(words).map(([text, ours]) => (
                     <li key={`${column} ${text}`} className="flex flex-wrap items-center gap-2">
                       <span>
-                        {COLUMN_LABELS[column as NameColumn]} “{text}” means <strong>{ours}</strong>
+                        {decisionsSheet.columnTextMeans(COLUMN_LABELS[column as NameColumn], text)}
+                        <strong>{ours}</strong>
                       </span>
                       <button
                         type="button"
@@ -128,7 +130,7 @@ export function DecisionsSheet({ site, names, checked, choices, onChoices }: Pro
                           onChoices({ ...choices, meanings: { ...choices.meanings, [column]: rest } });
                         }}
                       >
-                        take back
+                        {decisionsSheet.takeBack}
                       </button>
                     </li>
                   )),
@@ -146,22 +148,14 @@ export function DecisionsSheet({ site, names, checked, choices, onChoices }: Pro
 function NewStrings({ site, names, checked, choices, onChoices }: Props) {
   const made = choices.newStrings;
   const some = checked.newStrings.slice(0, 8).join(', ');
-  const more = checked.newStrings.length > 8 ? ` and ${number(checked.newStrings.length - 8)} more` : '';
+  const more = checked.newStrings.length > 8 ? decisionsSheet.andMore(checked.newStrings.length) : '';
   if (!made)
     return (
       <div>
-        <h3 className="mb-1 text-[15px]">
-          {checked.newStrings.length === 1
-            ? 'One string is'
-            : `${number(checked.newStrings.length)} strings are`}{' '}
-          not in the as-built yet
-        </h3>
-        <p className="mb-3 text-ink-2">
-          {some}
-          {more}. If the names are right, they can be made with this import.
-        </p>
+        <h3 className="mb-1 text-[15px]">{decisionsSheet.newStrings1OneString(checked.newStrings.length)}</h3>
+        <p className="mb-3 text-ink-2">{decisionsSheet.ifTheNamesAre(some, more)}</p>
         <Button onClick={() => onChoices({ ...choices, newStrings: firstDefaults(names) })}>
-          Make {checked.newStrings.length === 1 ? 'it' : 'them'}
+          {decisionsSheet.makeNewStrings(checked.newStrings.length)}
         </Button>
       </div>
     );
@@ -177,7 +171,11 @@ function NewStrings({ site, names, checked, choices, onChoices }: Props) {
         label={label}
         value={typeof value === 'string' ? value : ''}
         options={[
-          { value: '', label: list.length + extra.length > 0 ? 'as the file says' : 'none is entered yet' },
+          {
+            value: '',
+            label:
+              list.length + extra.length > 0 ? decisionsSheet.asTheFileSays : decisionsSheet.noneIsEnteredYet,
+          },
           ...extra,
           ...list.map((n) => ({ value: n, label: n })),
         ]}
@@ -189,36 +187,34 @@ function NewStrings({ site, names, checked, choices, onChoices }: Props) {
   return (
     <fieldset>
       <legend className="mb-1 text-[15px] font-semibold">
-        New strings ({number(checked.newStrings.length)}) are made with
+        {decisionsSheet.newStringsAreMade(checked.newStrings.length)}
       </legend>
       <p className="mb-3 text-ink-2">
-        {some}
-        {more}. What the file says goes first; this is for the rest. Planes, inputs and zones are entered on
-        the{' '}
+        {decisionsSheet.whatTheFileSays(some, more)}
         <a className="text-petrol hover:underline" href={paths.asBuilt(site)}>
-          as-built page
+          {decisionsSheet.asBuiltPage}
         </a>
         .
       </p>
       <div className="grid gap-4 sm:grid-cols-2 lg:grid-cols-3">
-        {pick('plane', 'Plane', names.planes)}
+        {pick('plane', decisionsSheet.plane, names.planes)}
         {pick(
           'input',
-          'Input',
+          decisionsSheet.input,
           names.inputs.map((i) => inputName(i.inverter, i.number)),
-          [{ value: 'each_next', label: 'each the next one without a string' }],
+          [{ value: 'each_next', label: decisionsSheet.eachTheNextOne }],
         )}
-        {pick('zone', 'Zone', names.zones)}
+        {pick('zone', decisionsSheet.zone, names.zones)}
         {pick(
           'unitType',
-          'Unit type',
+          decisionsSheet.unitType,
           names.unitTypes.map((t) => t.name),
         )}
-        {pick('moduleType', 'Module type', names.moduleTypes)}
-        {kind !== 'shutdown_only' && pick('logger', 'Logger', names.loggers)}
+        {pick('moduleType', decisionsSheet.moduleType, names.moduleTypes)}
+        {kind !== 'shutdown_only' && pick('logger', decisionsSheet.logger, names.loggers)}
         {kind !== 'monitored' && kind !== 'optimizing' && names.transmitters.length > 0 && (
           <fieldset>
-            <legend className="mb-1 font-medium">Transmitters</legend>
+            <legend className="mb-1 font-medium">{decisionsSheet.transmitters}</legend>
             <div className="flex flex-wrap gap-x-4">
               {names.transmitters.map((t) => (
                 <label key={t} className="flex min-h-[44px] items-center gap-2">
@@ -250,7 +246,7 @@ function NewStrings({ site, names, checked, choices, onChoices }: Props) {
         className="target mt-2 text-petrol hover:underline"
         onClick={() => onChoices({ ...choices, newStrings: null })}
       >
-        Make no new strings
+        {decisionsSheet.makeNoNewStrings}
       </button>
     </fieldset>
   );

@@ -9,6 +9,7 @@ import { number } from '../../drawings/numbers';
 import { harmlessCell } from '../../schemas/csv-cell';
 import { cellKey } from './desk';
 import { FAULT_NAMES } from './words';
+import { faultsSheet } from '../../words/import';
 
 interface Props {
   faults: readonly CellFault[];
@@ -50,10 +51,10 @@ export function FaultsSheet({ faults, count, texts, edits, onEdit, by }: Props) 
       id="faults"
       title={
         by === 'as-built'
-          ? 'Cells that clash with the as-built'
+          ? faultsSheet.cellsThatClashWith
           : faults.some((f) => f.weight === 'fault')
-            ? 'Cells that need a look'
-            : 'Worth a look, and no bar to the import'
+            ? faultsSheet.cellsThatNeedA
+            : faultsSheet.worthALookAnd
       }
       aside={
         <button
@@ -61,16 +62,16 @@ export function FaultsSheet({ faults, count, texts, edits, onEdit, by }: Props) 
           className="target px-1 text-petrol hover:underline"
           onClick={() => saveCsv(faults, texts)}
         >
-          As CSV
+          {faultsSheet.asCSV}
         </button>
       }
     >
       <div className="mb-3 grid items-end gap-3 sm:grid-cols-[1fr_1fr_auto]">
         <Choice
-          label="Kind"
+          label={faultsSheet.kind}
           value={code}
           options={[
-            { value: '', label: `all (${number(count)})` },
+            { value: '', label: faultsSheet.allCount(count) },
             ...FAULT_CODES.flatMap((c) => {
               const n = counts.get(c);
               return n ? [{ value: c, label: `${FAULT_NAMES[c]} (${number(n)})` }] : [];
@@ -79,16 +80,14 @@ export function FaultsSheet({ faults, count, texts, edits, onEdit, by }: Props) 
           onChange={(v) => setCode(FAULT_CODES.find((c) => c === v) ?? '')}
         />
         <Field
-          label="Find"
+          label={faultsSheet.find}
           type="search"
           value={search}
           onChange={(event) => setSearch(event.target.value)}
-          placeholder="row, string, serial"
+          placeholder={faultsSheet.rowStringSerial}
         />
         {proposed.length > 0 && (
-          <Button onClick={takeAll}>
-            Take {proposed.length === 1 ? 'the proposal' : `all ${number(proposed.length)} proposals`}
-          </Button>
+          <Button onClick={takeAll}>{faultsSheet.takeProposed1The(proposed.length)}</Button>
         )}
       </div>
       <ol className="divide-y divide-rule-faint border-t border-rule">
@@ -102,18 +101,14 @@ export function FaultsSheet({ faults, count, texts, edits, onEdit, by }: Props) 
           />
         ))}
       </ol>
-      {list.length === 0 && (
-        <p className="py-4 text-ink-2">No fault of this kind, or none that has this in it.</p>
-      )}
+      {list.length === 0 && <p className="py-4 text-ink-2">{faultsSheet.noFaultOfThis}</p>}
       {list.length > shown && (
         <Button className="mt-3" onClick={() => setShown(shown + PAGE * 4)}>
-          Show more of {number(list.length)}
+          {faultsSheet.showMoreOf(list.length)}
         </Button>
       )}
       {count > faults.length && (
-        <p className="mt-3 text-ink-2">
-          The first {number(faults.length)} of {number(count)} are listed.
-        </p>
+        <p className="mt-3 text-ink-2">{faultsSheet.theFirstOfAre(faults.length, count)}</p>
       )}
     </Sheet>
   );
@@ -129,18 +124,18 @@ interface RowProps {
 function FaultRow({ fault, text, edited, onEdit }: RowProps) {
   const [typed, setTyped] = useState<string | null>(null);
   const value = typed ?? text;
-  const where = `row ${fault.row}, ${COLUMN_LABELS[fault.column]}`;
+  const where = faultsSheet.rowRowColumn(fault.row, COLUMN_LABELS[fault.column]);
   return (
     <li className="grid gap-x-4 gap-y-1 py-3 md:grid-cols-[150px_minmax(180px,260px)_1fr] md:items-start">
       <p className="text-[15px]">
-        <span className="font-semibold">Row {number(fault.row)}</span>
+        <span className="font-semibold">{faultsSheet.rowRow(fault.row)}</span>
         <br className="hidden md:inline" />
         <span className="text-ink-2 md:hidden">, </span>
         <span className="text-ink-2">{COLUMN_LABELS[fault.column]}</span>
       </p>
       <div className="flex gap-2">
         <input
-          aria-label={`Cell in ${where}`}
+          aria-label={faultsSheet.cellIn(where)}
           value={value}
           spellCheck={false}
           onChange={(event) => setTyped(event.target.value)}
@@ -156,7 +151,7 @@ function FaultRow({ fault, text, edited, onEdit }: RowProps) {
       <div className="text-[15px] leading-5">
         <p className={fault.weight === 'fault' ? 'font-medium text-rust-ink' : 'font-medium'}>
           {sentence(fault.message)}
-          {edited && <span className="font-normal text-ink-2"> (as you wrote it)</span>}
+          {edited && <span className="font-normal text-ink-2">{faultsSheet.asYouWroteIt}</span>}
         </p>
         <p className="text-ink-2">{fault.remedy}</p>
         {fault.suggestion !== null && fault.suggestion !== text && (
@@ -168,7 +163,7 @@ function FaultRow({ fault, text, edited, onEdit }: RowProps) {
               onEdit(fault.suggestion ?? '');
             }}
           >
-            Write {fault.suggestion}
+            {faultsSheet.writeSuggestion(fault.suggestion)}
           </button>
         )}
       </div>
@@ -183,7 +178,7 @@ function saveCsv(faults: readonly CellFault[], texts: Readonly<Record<string, st
   const quoted = (text: string) => `"${harmlessCell(text).replaceAll('"', '""')}"`;
   const column = (c: ImportColumn) => COLUMN_LABELS[c];
   const records = [
-    ['row', 'column', 'cell', 'what is wrong', 'what would do', 'proposal'],
+    ['row', 'column', 'cell', faultsSheet.whatIsWrong, faultsSheet.whatWouldDo, 'proposal'],
     ...faults.map((f) => [
       String(f.row),
       column(f.column),

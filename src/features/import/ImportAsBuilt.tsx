@@ -12,6 +12,7 @@ import { FileSheet } from '../../components/table-file/FileSheet';
 import { ProgressLine } from '../../components/table-file/ProgressLine';
 import { faultsOf, useImport } from './use-import';
 import { finding } from './words';
+import { importAsBuilt } from '../../words/import';
 
 /** Strings and serials from a file: read, matched, checked, looked at, and then written all at once. */
 export function ImportAsBuilt({ initial }: { initial: ImportPage }) {
@@ -31,17 +32,17 @@ export function ImportAsBuilt({ initial }: { initial: ImportPage }) {
   const changes = outcome ? Object.values(outcome.counts).reduce((a, b) => a + b, 0) : 0;
   const send = () => {
     const why = reason.trim();
-    setReasonFault(why.length < 3 ? 'Say why, in a few words: it stays in the history.' : null);
+    setReasonFault(why.length < 3 ? importAsBuilt.sayWhyInA : null);
     if (why.length >= 3) work.apply(why);
   };
   return (
     <>
       <Heading
         crumbs={[
-          { label: 'Commissioning', href: paths.commissioning() },
+          { label: importAsBuilt.commissioning, href: paths.commissioning() },
           { label: initial.site.name, href: paths.commissioningSite(site) },
-          { label: 'As-built', href: paths.asBuilt(site) },
-          { label: 'Import' },
+          { label: importAsBuilt.asBuilt, href: paths.asBuilt(site) },
+          { label: importAsBuilt.import },
         ]}
         finding={said.heading}
         sentence={said.sentence}
@@ -55,14 +56,14 @@ export function ImportAsBuilt({ initial }: { initial: ImportPage }) {
             words={busy.words}
             share={busy.share}
             onStop={busy.stop ?? undefined}
-            stopWords="Stop: keep the as-built as it is"
+            stopWords={importAsBuilt.stopKeepTheAs}
           />
         )}
         {error && (
           <Notice
             kind="failed"
             title={error.title}
-            action={<Button onClick={work.check}>Check the file again</Button>}
+            action={<Button onClick={work.check}>{importAsBuilt.checkTheFileAgain}</Button>}
           >
             {error.message}
           </Notice>
@@ -70,23 +71,23 @@ export function ImportAsBuilt({ initial }: { initial: ImportPage }) {
         {outcome?.written && (
           <Notice
             kind="done"
-            title="All of it is kept"
+            title={importAsBuilt.allOfItIs}
             action={
               <span className="flex flex-wrap gap-2">
-                <ButtonLink href={paths.asBuilt(site)}>Look at the as-built</ButtonLink>
-                <ButtonLink href={paths.roofPlan(site)}>Lay the strings on the roof</ButtonLink>
-                <ButtonLink href={paths.asBuiltHistory(site)}>History</ButtonLink>
+                <ButtonLink href={paths.asBuilt(site)}>{importAsBuilt.lookAtTheAs}</ButtonLink>
+                <ButtonLink href={paths.roofPlan(site)}>{importAsBuilt.layTheStringsOn}</ButtonLink>
+                <ButtonLink href={paths.asBuiltHistory(site)}>{importAsBuilt.history}</ButtonLink>
               </span>
             }
           >
-            The same file once more would change nothing.
+            {importAsBuilt.theSameFileOnce}
           </Notice>
         )}
         {outcome && !outcome.written && outcome.faultCount === 0 && changes === 0 && (
           <Notice
             kind="done"
-            title="The as-built says the same already"
-            action={<ButtonLink href={paths.asBuilt(site)}>Look at the as-built</ButtonLink>}
+            title={importAsBuilt.theAsBuiltSays}
+            action={<ButtonLink href={paths.asBuilt(site)}>{importAsBuilt.lookAtTheAs}</ButtonLink>}
           />
         )}
         {!outcome?.written && outcome && outcome.faultCount === 0 && changes > 0 && (
@@ -141,12 +142,11 @@ export function ImportAsBuilt({ initial }: { initial: ImportPage }) {
           <FileSheet
             hint={
               <>
-                One row a slot: string, position, serial, and what else you have. Comma, semicolon or tab; any
-                common encoding.{' '}
+                {importAsBuilt.oneRowASlot}
                 <a className="text-petrol hover:underline" href={paths.api.asBuiltCsv(site)}>
-                  Take the as-built as it stands
-                </a>{' '}
-                as a pattern: it comes back in unchanged.
+                  {importAsBuilt.takeTheAsBuilt}
+                </a>
+                {importAsBuilt.asAPatternIt}
               </>
             }
             name={work.name}

@@ -19,6 +19,7 @@ import {
 import { decode, type Encoding } from '../../components/table-file/decode';
 import { parseText, ROWS_MAX, separatorOf, type ParsedFile } from '../../components/table-file/parse';
 import type { Separator } from '../../components/table-file/separators';
+import { importDesk } from '../../words/import';
 
 /** What the desk says of a file before anything is checked. */
 export interface FileFacts {
@@ -87,7 +88,7 @@ export class Desk {
     const hasHeader = header ?? looksLikeHeader(first);
     const width = Math.max(...rows.slice(0, 200).map((r) => r.length));
     const headers = Array.from({ length: width }, (_, i) =>
-      hasHeader ? (first[i] ?? '').trim() || `column ${i + 1}` : `column ${i + 1}`,
+      hasHeader ? (first[i] ?? '').trim() || importDesk.columnI(i) : importDesk.columnI(i),
     );
     const data = hasHeader ? rows.slice(1) : rows;
     if (data.length === 0) throw new Error('There is a header in it and no row below. Choose another file.');

@@ -2,6 +2,7 @@ import { ApiError, errorOf } from '../../lib/api';
 import { linesOf } from '../../lib/ndjson';
 import type { ImportBody, ImportLine, ImportOutcome, ImportStep } from '../../schemas/api/import';
 import { paths } from '../../schemas/paths';
+import { importSend } from '../../words/import';
 
 export interface Progress {
   step: ImportStep;
@@ -9,11 +10,7 @@ export interface Progress {
   of: number;
 }
 
-const BROKEN = new ApiError(
-  0,
-  'The connection broke before the server had answered',
-  'Nothing is half done: either all of the file is in the as-built or nothing of it. Check the file again to see which.',
-);
+const BROKEN = new ApiError(0, importSend.theConnectionBrokeBefore, importSend.nothingIsHalfDone);
 
 /**
  * Sends an import and tells its progress.

@@ -14,6 +14,7 @@ import { DeskClient } from './desk-client';
 import type { Separator } from '../../components/table-file/separators';
 import { sendImport, type Progress } from './send';
 import { STEP_WORDS } from './words';
+import { importUseImport } from '../../words/import';
 
 export const FILE_MAX_BYTES = 20 * 1024 * 1024;
 
@@ -89,10 +90,10 @@ export function useImport(initial: ImportPage) {
       setError(null);
       setChoices(NO_CHOICES);
       setEdits({});
-      setBusy({ words: 'Reading the file', share: null, stop: null });
+      setBusy({ words: importUseImport.readingTheFile, share: null, stop: null });
       try {
         const read = await desk.current?.take(await content(), (share) =>
-          setBusy({ words: 'Reading the file', share, stop: null }),
+          setBusy({ words: importUseImport.readingTheFile, share, stop: null }),
         );
         if (read) took(read);
       } catch (fault) {
@@ -110,9 +111,7 @@ export function useImport(initial: ImportPage) {
         setFacts(null);
         setMatch(null);
         setChecked(null);
-        setFileFault(
-          `It has ${Math.round(file.size / 1024 / 1024)} MB, and 20 MB is the most. 10,000 slots are about 1 MB: is this the right file?`,
-        );
+        setFileFault(importUseImport.itHasMBAnd(Math.round(file.size / 1024 / 1024)));
         return;
       }
       void take(file.name, async () => new Uint8Array(await file.arrayBuffer()));
@@ -120,7 +119,7 @@ export function useImport(initial: ImportPage) {
     [take],
   );
   const takeText = useCallback(
-    (text: string) => void take('pasted cells', () => Promise.resolve(text)),
+    (text: string) => void take(importUseImport.pastedCells, () => Promise.resolve(text)),
     [take],
   );
   const split = useCallback(
@@ -144,7 +143,7 @@ export function useImport(initial: ImportPage) {
     if (!desk.current || !match || !facts) return;
     const mine = ++turn.current;
     abort.current?.abort();
-    const words = 'Checking the cells';
+    const words = importUseImport.checkingTheCells;
     setBusy({ words, share: null, stop: null });
     setOutcome(null);
     setError(null);
@@ -189,7 +188,7 @@ export function useImport(initial: ImportPage) {
       abort.current = control;
       const stop = () => control.abort();
       setError(null);
-      setBusy({ words: 'Sending the rows', share: null, stop });
+      setBusy({ words: importUseImport.sendingTheRows, share: null, stop });
       const onProgress = ({ step }: Progress) =>
         setBusy({
           words: STEP_WORDS[step],
@@ -213,14 +212,7 @@ export function useImport(initial: ImportPage) {
         );
       } catch (fault) {
         if (fault instanceof ApiError) setError(fault);
-        else
-          setError(
-            new ApiError(
-              0,
-              'Stopped',
-              'The as-built is as it was, unless the server had finished already: check again to see.',
-            ),
-          );
+        else setError(new ApiError(0, importUseImport.stopped, importUseImport.theAsBuiltIs));
       } finally {
         setBusy(null);
       }

@@ -11,17 +11,18 @@ import { api, ApiError } from '../../lib/api';
 import type { JobKindLine, JobsPage as Page, RetryBody } from '../../schemas/api/jobs';
 import { paths } from '../../schemas/paths';
 import { doneWords, isLate, jobsFinding, took } from './words';
+import { jobsPage } from '../../words/jobs';
 
 function Last({ kind, page, timeZone }: { kind: JobKindLine; page: Page; timeZone: string }) {
   const { last } = kind;
-  if (!last) return <span className="text-ink-2">not yet</span>;
+  if (!last) return <span className="text-ink-2">{jobsPage.notYet}</span>;
   return (
     <>
       <SiteTime at={last.startedAt} now={page.at} timeZone={timeZone} />
       <span className="block text-sm text-ink-2">
         {last.endedAt === null
-          ? 'not ended: it runs, or its process died'
-          : (last.failed ?? (doneWords(last.done) || 'nothing to do'))}
+          ? jobsPage.notEndedItRuns
+          : (last.failed ?? (doneWords(last.done) || jobsPage.nothingToDo))}
       </span>
     </>
   );
@@ -31,22 +32,22 @@ function State({ kind, at }: { kind: JobKindLine; at: string }) {
   if (kind.failing > 0)
     return (
       <Tag tone="rust" shape="✕">
-        failing
+        {jobsPage.failing}
       </Tag>
     );
   if (isLate(kind, at))
     return (
       <Tag tone="rust" shape="!">
-        late
+        {jobsPage.late}
       </Tag>
     );
   if (kind.running > 0)
     return (
       <Tag tone="petrol" shape="◐">
-        runs
+        {jobsPage.runs}
       </Tag>
     );
-  return <Tag shape="✓">in order</Tag>;
+  return <Tag shape="✓">{jobsPage.inOrder}</Tag>;
 }
 
 /** How background jobs go, and the button that tries a failed one again. */
@@ -62,11 +63,9 @@ export function JobsPage({ initial, timeZone }: { initial: Page; timeZone: strin
     try {
       const body: RetryBody = { job };
       setPage(await api<Page>(paths.api.jobsRetry(), { method: 'POST', body }));
-      setSaid(`"${title}" is tried again now.`);
+      setSaid(jobsPage.isTriedAgainNow(title));
     } catch (error) {
-      setFault(
-        error instanceof ApiError ? error : new ApiError(0, 'Not sent', 'It did not work. Try again.'),
-      );
+      setFault(error instanceof ApiError ? error : new ApiError(0, jobsPage.notSent, jobsPage.itDidNotWork));
     }
     setBusy(null);
   };
@@ -84,7 +83,7 @@ export function JobsPage({ initial, timeZone }: { initial: Page; timeZone: strin
         {said}
       </p>
       {page.failing.length > 0 && (
-        <Sheet id="failing" title="To be tried again" className="mb-5">
+        <Sheet id="failing" title={jobsPage.toBeTriedAgain} className="mb-5">
           <ul className="divide-y divide-rule-faint">
             {page.failing.map((job) => (
               <li key={job.id} className="flex flex-wrap items-center justify-between gap-x-6 gap-y-2 py-3">
@@ -95,50 +94,77 @@ export function JobsPage({ initial, timeZone }: { initial: Page; timeZone: strin
                   </p>
                   <p className="break-words text-sm text-rust-ink">{job.error}</p>
                   <p className="text-sm text-ink-2">
-                    tried {job.attempts} of {job.attemptsMax} times
-                    {job.nextAt === null ? '; given up' : ', next at '}
+                    {jobsPage.triedOfTimes(job.attempts, job.attemptsMax, job.nextAt)}
                     {job.nextAt !== null && <SiteTime at={job.nextAt} now={page.at} timeZone={timeZone} />}
                   </p>
                 </div>
                 <Button disabled={busy !== null} onClick={() => void retry(job.id, job.title)}>
-                  {busy === job.id ? 'Trying …' : 'Try again now'}
+                  {busy === job.id ? jobsPage.trying : jobsPage.tryAgainNow}
                 </Button>
               </li>
             ))}
           </ul>
         </Sheet>
       )}
-      <Sheet id="kinds" title="Kinds of job" flush>
+      <Sheet id="kinds" title={jobsPage.kindsOfJob} flush>
         <Table
-          caption="Kinds of background job, how each last went and when it runs next"
+          caption={jobsPage.kindsOfBackgroundJob}
           rows={page.kinds}
           rowKey={(k) => k.task}
           columns={[
-            { key: 'title', label: 'Job', cell: (k) => <span className="font-medium">{k.title}</span> },
-            { key: 'state', label: 'State', cell: (k) => <State kind={k} at={page.at} /> },
+            {
+              key: 'title',
+              label: jobsPage.job,
+              cell: (k) => <span className="font-medium">{k.title}</span>,
+            },
+            { key: 'state', label: jobsPage.state, cell: (k) => <State kind={k} at={page.at} /> },
             {
               key: 'last',
-              label: 'Last run',
+              label: jobsPage.lastRun,
               cell: (k) => <Last kind={k} page={page} timeZone={timeZone} />,
             },
-            { key: 'took', label: 'Took', numeric: true, from: 'sm', cell: (k) => took(k.last?.ms ?? null) },
-            { key: 'usual', label: 'Usually', numeric: true, from: 'lg', cell: (k) => took(k.usualMs) },
+            {
+              key: 'took',
+              label: jobsPage.took,
+              numeric: true,
+              from: 'sm',
+              cell: (k) => took(k.last?.ms ?? null),
+            },
+            {
+              key: 'usual',
+              label: jobsPage.usually,
+              numeric: true,
+              from: 'lg',
+              cell: (k) => took(k.usualMs),
+            },
             {
               key: 'next',
-              label: 'Next',
+              label: jobsPage.next,
               from: 'sm',
               cell: (k) =>
                 k.next === null ? (
-                  <span className="text-ink-2">when asked</span>
+                  <span className="text-ink-2">{jobsPage.whenAsked}</span>
                 ) : (
                   <SiteTime at={k.next} now={page.at} timeZone={timeZone} />
                 ),
             },
-            { key: 'waiting', label: 'Waiting', numeric: true, from: 'md', cell: (k) => number(k.waiting) },
-            { key: 'runs', label: 'Runs, 24 h', numeric: true, from: 'lg', cell: (k) => number(k.runs24h) },
+            {
+              key: 'waiting',
+              label: jobsPage.waiting,
+              numeric: true,
+              from: 'md',
+              cell: (k) => number(k.waiting),
+            },
+            {
+              key: 'runs',
+              label: jobsPage.runs24H,
+              numeric: true,
+              from: 'lg',
+              cell: (k) => number(k.runs24h),
+            },
             {
               key: 'failed',
-              label: 'Failed, 24 h',
+              label: jobsPage.failed24H,
               numeric: true,
               from: 'md',
               cell: (k) => number(k.failed24h),
@@ -147,14 +173,14 @@ export function JobsPage({ initial, timeZone }: { initial: Page; timeZone: strin
         />
       </Sheet>
       {page.failures.length > 0 && (
-        <Sheet id="failures" title="Failures of the last days" className="mt-5">
+        <Sheet id="failures" title={jobsPage.failuresOfTheLast} className="mt-5">
           <ul className="divide-y divide-rule-faint">
             {page.failures.map((f) => (
               <li key={`${f.task} ${f.siteName ?? ''} ${f.startedAt}`} className="py-2">
                 <p className="text-sm text-ink-2">
                   <SiteTime at={f.startedAt} now={page.at} timeZone={timeZone} /> · {f.title}
                   {f.siteName && `, ${f.siteName}`}
-                  {f.times > 1 && ` · ${f.times} times, the newest`}
+                  {f.times > 1 && jobsPage.timesTheNewest(f.times)}
                 </p>
                 <p className="break-words">{f.failed}</p>
               </li>

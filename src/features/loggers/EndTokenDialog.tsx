@@ -8,6 +8,7 @@ import { ApiError } from '../../lib/api';
 import { queryClient } from '../../lib/query-client';
 import type { LoggerTokenView, LoggerView } from '../../schemas/api/loggers';
 import { endToken, loggersKey } from './queries';
+import { endTokenDialog } from '../../words/loggers';
 
 interface Props {
   site: string;
@@ -32,7 +33,7 @@ export function EndTokenDialog({ site, logger, token, operating, onClose }: Prop
   );
   const others = logger.tokens.filter((t) => t.state !== 'ended' && t.id !== token.id).length;
   return (
-    <Dialog open title={`End ${token.name ? `“${token.name}”` : 'this token'} now`} onClose={onClose}>
+    <Dialog open title={endTokenDialog.endTokenTokenThis(token.name)} onClose={onClose}>
       <form
         className="grid gap-4"
         onSubmit={(event) => {
@@ -40,32 +41,27 @@ export function EndTokenDialog({ site, logger, token, operating, onClose }: Prop
           end.mutate();
         }}
       >
-        <p>
-          Whoever speaks with it is cut off at once.{' '}
-          {others === 0
-            ? `Logger ${logger.serial} has no other token: it is refused until it gets a new one, and nothing of its units is heard. What it has not sent yet stays in it.`
-            : 'Another token of this logger stays in force.'}
-        </p>
+        <p>{endTokenDialog.whoeverSpeaksWithIt(others, logger.serial)}</p>
         {operating && (
           <Field
-            label="Why"
+            label={endTokenDialog.why}
             name="reason"
             value={reason}
             onChange={(event) => setReason(event.target.value)}
             error={end.error instanceof ApiError ? (end.error.fault('reason') ?? null) : null}
-            hint="A few words; they stay in the history."
+            hint={endTokenDialog.aFewWordsThey}
           />
         )}
         {end.error && (
-          <Notice kind="failed" title="The token was not ended">
+          <Notice kind="failed" title={endTokenDialog.theTokenWasNot}>
             {end.error.message}
           </Notice>
         )}
         <div className="flex flex-wrap gap-2">
           <Button weight="primary" type="submit" disabled={end.isPending}>
-            {end.isPending ? 'Ending …' : 'End it now'}
+            {end.isPending ? endTokenDialog.ending : endTokenDialog.endItNow}
           </Button>
-          <Button onClick={onClose}>Keep it</Button>
+          <Button onClick={onClose}>{endTokenDialog.keepIt}</Button>
         </div>
       </form>
     </Dialog>

@@ -4,9 +4,10 @@ import { Sheet } from '../../components/ui/Sheet';
 import { Table } from '../../components/ui/Table';
 import { Tag } from '../../components/ui/Tag';
 import { SiteTime } from '../../components/ui/Time';
-import { counted, number } from '../../drawings/numbers';
+import { number } from '../../drawings/numbers';
 import type { LoggerTokenView, LoggerView } from '../../schemas/api/loggers';
 import { stateWords } from './words';
+import { loggerSheet } from '../../words/loggers';
 
 interface Props {
   logger: LoggerView;
@@ -26,43 +27,49 @@ export function LoggerSheet({ logger, now, timeZone, mayManage, onNew, onEnd }: 
     <Sheet
       id={`logger-${logger.serial}`}
       flush
-      title={`Logger ${logger.serial}`}
+      title={loggerSheet.loggerSerial(logger.serial)}
       aside={
         <Tag tone={logger.connected ? 'petrol' : 'slate'} shape={logger.connected ? '●' : '▨'}>
-          {logger.connected ? `connected by ${logger.byHttps ? 'HTTPS' : 'WebSocket'}` : 'not connected'}
+          {logger.connected ? loggerSheet.connectedBy(logger.byHttps) : loggerSheet.notConnected}
         </Tag>
       }
     >
       <p className="mb-4 text-[15px]">
-        Last spoke {at(logger.lastSpokeAt)}
-        {logger.lastAddress && <> from {logger.lastAddress}</>}
-        {logger.firmware && <>; firmware {logger.firmware}</>}.
+        {loggerSheet.lastSpoke}
+        {at(logger.lastSpokeAt)}
+        {logger.lastAddress && <>{loggerSheet.fromLastAddress(logger.lastAddress)}</>}
+        {logger.firmware && <>{loggerSheet.firmwareFirmware(logger.firmware)}</>}.
       </p>
       <div className="mb-2 flex flex-wrap items-center justify-between gap-2">
-        <h3 className="text-[15px]">Tokens</h3>
+        <h3 className="text-[15px]">{loggerSheet.tokens}</h3>
         {mayManage && (
-          <Button onClick={onNew}>{alive.length === 0 ? 'Make a token' : 'Make a new token'}</Button>
+          <Button onClick={onNew}>
+            {alive.length === 0 ? loggerSheet.makeAToken : loggerSheet.makeANewToken}
+          </Button>
         )}
       </div>
       <Table<LoggerTokenView>
-        caption={`Tokens of logger ${logger.serial}`}
+        caption={loggerSheet.tokensOfLogger(logger.serial)}
         rows={logger.tokens}
         rowKey={(t) => t.id}
-        empty={<Notice kind="empty" title="It has no token, so that it is refused" />}
+        empty={<Notice kind="empty" title={loggerSheet.itHasNoToken} />}
         columns={[
           {
             key: 'name',
-            label: 'Token',
+            label: loggerSheet.token,
             cell: (t) => (
               <>
-                <span className="font-medium">{t.name || 'without a name'}</span>
-                <span className="block text-sm text-ink-2 md:hidden">last used {at(t.lastUsedAt)}</span>
+                <span className="font-medium">{t.name || loggerSheet.withoutAName}</span>
+                <span className="block text-sm text-ink-2 md:hidden">
+                  {loggerSheet.lastUsed}
+                  {at(t.lastUsedAt)}
+                </span>
               </>
             ),
           },
           {
             key: 'state',
-            label: 'State',
+            label: loggerSheet.state,
             cell: (t) => {
               const { words, shape } = stateWords(t, now);
               return (
@@ -76,7 +83,7 @@ export function LoggerSheet({ logger, now, timeZone, mayManage, onNew, onEnd }: 
                   {t.endsAt && (
                     <span className="block text-sm text-ink-2">
                       {at(t.endsAt)}
-                      {t.endedBy && ` by ${t.endedBy}`}
+                      {t.endedBy && loggerSheet.byEndedBy(t.endedBy)}
                     </span>
                   )}
                 </>
@@ -85,7 +92,7 @@ export function LoggerSheet({ logger, now, timeZone, mayManage, onNew, onEnd }: 
           },
           {
             key: 'made',
-            label: 'Made',
+            label: loggerSheet.made,
             from: 'md',
             cell: (t) => (
               <>
@@ -96,7 +103,7 @@ export function LoggerSheet({ logger, now, timeZone, mayManage, onNew, onEnd }: 
           },
           {
             key: 'used',
-            label: 'Last used',
+            label: loggerSheet.lastUsed2,
             from: 'md',
             cell: (t) => (
               <>
@@ -107,7 +114,7 @@ export function LoggerSheet({ logger, now, timeZone, mayManage, onNew, onEnd }: 
           },
           {
             key: 'end',
-            label: 'End',
+            label: loggerSheet.end,
             numeric: true,
             cell: (t) =>
               mayManage &&
@@ -115,46 +122,46 @@ export function LoggerSheet({ logger, now, timeZone, mayManage, onNew, onEnd }: 
                 <button
                   type="button"
                   className="target px-1 text-petrol hover:underline"
-                  aria-label={`End now: ${t.name ? `the token ${t.name}` : 'this token'}`}
+                  aria-label={loggerSheet.endNowNameThe(t.name)}
                   onClick={() => onEnd(t)}
                 >
-                  End now
+                  {loggerSheet.endNow}
                 </button>
               ),
           },
         ]}
       />
       <h3 className="mb-1 mt-6 text-[15px]">
-        {logger.refused === 0
-          ? 'Nothing of it was refused'
-          : `${counted(logger.refused, 'message')} refused so far`}
+        {logger.refused === 0 ? loggerSheet.nothingOfItWas : loggerSheet.refusedSoFar(logger.refused)}
       </h3>
       {logger.refusals.length > 0 && (
         <Table
-          caption={`What was refused of logger ${logger.serial}`}
+          caption={loggerSheet.whatWasRefusedOf(logger.serial)}
           rows={logger.refusals}
           rowKey={(r) => `${r.field} ${r.reason} ${r.firstAt}`}
           columns={[
             {
               key: 'what',
-              label: 'What was wrong, the newest of its kind',
+              label: loggerSheet.whatWasWrongThe,
               cell: (r) => (
                 <span className="break-words">
                   <code className="text-sm">{r.field}</code> {r.reason}
                 </span>
               ),
             },
-            { key: 'count', label: 'Times', numeric: true, cell: (r) => number(r.count) },
-            { key: 'first', label: 'First', from: 'md', cell: (r) => at(r.firstAt) },
-            { key: 'last', label: 'Last', cell: (r) => at(r.lastAt) },
+            { key: 'count', label: loggerSheet.times, numeric: true, cell: (r) => number(r.count) },
+            { key: 'first', label: loggerSheet.first, from: 'md', cell: (r) => at(r.firstAt) },
+            { key: 'last', label: loggerSheet.last, cell: (r) => at(r.lastAt) },
           ]}
         />
       )}
       {logger.wrongTokens && (
         <p className="mt-3 text-[15px] text-ink-2">
-          {counted(logger.wrongTokens.count, 'attempt')} with a token that nobody knows came from{' '}
-          {logger.lastAddress}, the last one {at(logger.wrongTokens.lastAt)}. Other devices may share this
-          address.
+          {loggerSheet.withTokenThatNobody(logger.wrongTokens.count)}
+          {logger.lastAddress}
+          {loggerSheet.theLastOne}
+          {at(logger.wrongTokens.lastAt)}
+          {loggerSheet.otherDevicesMayShare}
         </p>
       )}
     </Sheet>

@@ -15,6 +15,7 @@ import { LoggerSheet } from './LoggerSheet';
 import { NewTokenDialog } from './NewTokenDialog';
 import { loggersQuery } from './queries';
 import { finding } from './words';
+import { loggersBoard } from '../../words/loggers';
 
 interface Props {
   initial: LoggersPage;
@@ -35,28 +36,28 @@ export function LoggersBoard({ initial, mayManage }: Props) {
     <>
       <Heading
         crumbs={[
-          { label: 'Fleet', href: paths.fleet() },
+          { label: loggersBoard.fleet, href: paths.fleet() },
           { label: site.name, href: paths.site(site.id) },
-          { label: 'Loggers' },
+          { label: loggersBoard.loggers },
         ]}
         finding={said.heading}
         sentence={said.sentence}
       />
       <NotRead
         error={error}
-        title="The loggers could not be read anew"
+        title={loggersBoard.theLoggersCouldNot}
         kind="failed"
         onRetry={() => refetch()}
         className="mb-6"
       >
-        What is shown may be old.
+        {loggersBoard.whatIsShownMay}
       </NotRead>
       <div className="grid grid-cols-1 gap-6">
         {page.loggers.length === 0 && (
           <Notice
             kind="empty"
-            title="No logger yet"
-            action={<ButtonLink href={paths.asBuilt(site.id)}>Look at the as-built</ButtonLink>}
+            title={loggersBoard.noLoggerYet}
+            action={<ButtonLink href={paths.asBuilt(site.id)}>{loggersBoard.lookAtTheAs}</ButtonLink>}
           />
         )}
         {page.loggers.map((logger) => (
@@ -70,7 +71,7 @@ export function LoggersBoard({ initial, mayManage }: Props) {
             onEnd={(token) => setDoing({ kind: 'end', logger, token })}
           />
         ))}
-        <Fold title="A logger without our WebSocket reports by HTTPS" opens="How">
+        <Fold title={loggersBoard.aLoggerWithoutOur} opens={loggersBoard.how}>
           <ByHttps />
         </Fold>
       </div>

@@ -6,12 +6,12 @@ import { Choice } from '../../components/ui/Choice';
 import { Dialog } from '../../components/ui/Dialog';
 import { Field } from '../../components/ui/Field';
 import { Notice } from '../../components/ui/Notice';
-import { counted } from '../../drawings/numbers';
 import { ApiError } from '../../lib/api';
 import { queryClient } from '../../lib/query-client';
 import { OVERLAP_HOURS, type LoggerView } from '../../schemas/api/loggers';
 import { loggersKey, makeToken } from './queries';
 import { OVERLAP_WORDS } from './words';
+import { newTokenDialog } from '../../words/loggers';
 
 interface Props {
   site: string;
@@ -37,7 +37,7 @@ export function NewTokenDialog({ site, logger, operating, onClose }: Props) {
   const fault = (field: string) =>
     make.error instanceof ApiError ? (make.error.fault(field) ?? null) : null;
   return (
-    <Dialog open title={`A token for logger ${logger.serial}`} onClose={onClose}>
+    <Dialog open title={newTokenDialog.tokenForLogger(logger.serial)} onClose={onClose}>
       {make.data ? (
         <TokenShown token={make.data.token} onDone={onClose} />
       ) : (
@@ -49,45 +49,43 @@ export function NewTokenDialog({ site, logger, operating, onClose }: Props) {
           }}
         >
           <Field
-            label="Name"
+            label={newTokenDialog.name}
             name="name"
             value={name}
             maxLength={80}
             onChange={(event) => setName(event.target.value)}
             error={fault('name')}
-            hint="So that you know it again: where it was put, by whom."
+            hint={newTokenDialog.soThatYouKnow}
           />
           {before > 0 && (
             <Choice
-              label={before === 1 ? 'The one before ends' : `The ${counted(before, 'token')} before end`}
+              label={before === 1 ? newTokenDialog.theOneBeforeEnds : newTokenDialog.theBeforeEnd(before)}
               value={String(overlapHours)}
               options={OVERLAP_HOURS.map((h) => ({ value: String(h), label: OVERLAP_WORDS[h] ?? `${h} h` }))}
               onChange={(value) => setOverlapHours(Number(value))}
               error={fault('overlapHours')}
               hint={
-                overlapHours === 0
-                  ? 'Its connection is closed at once; the logger is refused until it has the new one. What it has not sent yet stays in it.'
-                  : 'Until then both let the logger in: there is time to put the new one into it.'
+                overlapHours === 0 ? newTokenDialog.itsConnectionIsClosed : newTokenDialog.untilThenBothLet
               }
             />
           )}
           {operating && before > 0 && (
             <Field
-              label="Why"
+              label={newTokenDialog.why}
               name="reason"
               value={reason}
               onChange={(event) => setReason(event.target.value)}
               error={fault('reason')}
-              hint="A few words; they stay in the history."
+              hint={newTokenDialog.aFewWordsThey}
             />
           )}
           {make.error && (
-            <Notice kind="failed" title="No token was made">
+            <Notice kind="failed" title={newTokenDialog.noTokenWasMade}>
               {make.error.message}
             </Notice>
           )}
           <Button weight="primary" type="submit" disabled={make.isPending} className="justify-self-start">
-            {make.isPending ? 'Making …' : 'Make the token'}
+            {make.isPending ? newTokenDialog.making : newTokenDialog.makeTheToken}
           </Button>
         </form>
       )}

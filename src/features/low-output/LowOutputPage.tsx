@@ -23,6 +23,7 @@ import {
 import type { SavedView } from '../../schemas/api/saved-views';
 import { paths } from '../../schemas/paths';
 import { lowFinding, SIGNATURE_WORDS } from './words';
+import { lowOutputPage } from '../../words/low-output';
 
 interface Props {
   low: LowOutput;
@@ -35,14 +36,14 @@ const day = (text: string): string => shortDate(`${text}T12:00:00Z`, 'UTC');
 const between = (r: LowString): string =>
   r.lossKWhDayLow === null || r.lossKWhDayHigh === null
     ? ''
-    : `${number(r.lossKWhDayLow, 1)} to ${number(r.lossKWhDayHigh, 1)}`;
+    : lowOutputPage.lossKWhDayLowToLossKWhDayHigh(r.lossKWhDayLow, r.lossKWhDayHigh);
 
 function columnsFor(low: LowOutput): Column<LowString>[] {
   const priced = low.currency !== null && low.rows.some((r) => r.moneyDay !== null);
   return [
     {
       key: 'string',
-      label: 'String',
+      label: lowOutputPage.string,
       sortable: true,
       cell: (r) => (
         <>
@@ -60,7 +61,7 @@ function columnsFor(low: LowOutput): Column<LowString>[] {
     },
     {
       key: 'site',
-      label: 'Site',
+      label: lowOutputPage.site,
       sortable: true,
       from: 'md',
       cell: (r) => (
@@ -71,7 +72,7 @@ function columnsFor(low: LowOutput): Column<LowString>[] {
     },
     {
       key: 'loss',
-      label: 'Loss a day',
+      label: lowOutputPage.lossADay,
       numeric: true,
       sortable: true,
       cell: (r) => (
@@ -85,7 +86,7 @@ function columnsFor(low: LowOutput): Column<LowString>[] {
       ? [
           {
             key: 'money',
-            label: 'Worth a day',
+            label: lowOutputPage.worthADay,
             numeric: true,
             sortable: true,
             from: 'sm' as const,
@@ -95,7 +96,7 @@ function columnsFor(low: LowOutput): Column<LowString>[] {
       : []),
     {
       key: 'share',
-      label: 'Missing',
+      label: lowOutputPage.missing,
       numeric: true,
       sortable: true,
       from: 'sm',
@@ -103,19 +104,19 @@ function columnsFor(low: LowOutput): Column<LowString>[] {
     },
     {
       key: 'since',
-      label: 'Since',
+      label: lowOutputPage.since,
       numeric: true,
       sortable: true,
       from: 'sm',
       cell: (r) => (
-        <time dateTime={r.since} title={`judged after ${r.day}`}>
+        <time dateTime={r.since} title={lowOutputPage.judgedAfter(r.day)}>
           {day(r.since)}
         </time>
       ),
     },
     {
       key: 'signature',
-      label: 'What it looks like',
+      label: lowOutputPage.whatItLooksLike,
       from: 'md',
       cell: (r) => (
         <>
@@ -124,10 +125,10 @@ function columnsFor(low: LowOutput): Column<LowString>[] {
         </>
       ),
     },
-    { key: 'plane', label: 'Plane', sortable: true, from: 'lg', cell: (r) => r.plane },
+    { key: 'plane', label: lowOutputPage.plane, sortable: true, from: 'lg', cell: (r) => r.plane },
     {
       key: 'confidence',
-      label: 'Confidence',
+      label: lowOutputPage.confidence,
       numeric: true,
       sortable: true,
       from: 'lg',
@@ -135,15 +136,15 @@ function columnsFor(low: LowOutput): Column<LowString>[] {
         <>
           {percent(r.confidence)}
           <span className="block text-xs text-ink-2">
-            {r.method === 'siblings' ? 'by siblings' : 'by the model'}
-            {r.scope === 'input' ? ', input' : ''}
+            {r.method === 'siblings' ? lowOutputPage.bySiblings : lowOutputPage.byTheModel}
+            {r.scope === 'input' ? lowOutputPage.input : ''}
           </span>
         </>
       ),
     },
     {
       key: 'case',
-      label: 'Case',
+      label: lowOutputPage.case,
       cell: (r) => (
         <a
           href={
@@ -153,7 +154,7 @@ function columnsFor(low: LowOutput): Column<LowString>[] {
           }
           className="inline-flex min-h-[44px] items-center whitespace-nowrap text-petrol hover:underline"
         >
-          {r.openCase ? `Case ${r.openCase.number}` : 'Open a case'}
+          {r.openCase ? lowOutputPage.caseOpenCase(r.openCase.number) : lowOutputPage.openACase}
         </a>
       ),
     },
@@ -171,7 +172,7 @@ function Page({ low, saved, view: asked, defaults }: Props) {
   return (
     <>
       <Heading
-        crumbs={[{ label: 'Causes', href: paths.causes() }, { label: 'Low strings' }]}
+        crumbs={[{ label: lowOutputPage.causes, href: paths.causes() }, { label: lowOutputPage.lowStrings }]}
         finding={heading}
         sentence={sentence}
         actions={<ButtonLink href={withQuery(paths.api.lowOutputCsv(), { ...view })}>CSV</ButtonLink>}
@@ -181,43 +182,51 @@ function Page({ low, saved, view: asked, defaults }: Props) {
           {sentence}
         </Notice>
       ) : (
-        <Sheet id="low" title="Strings" aside={`${rows.length} of ${low.rows.length}`} flush>
+        <Sheet
+          id="low"
+          title={lowOutputPage.strings}
+          aside={lowOutputPage.rowsOfRows(rows.length, low.rows.length)}
+          flush
+        >
           <form
             className="no-print mb-3 flex flex-wrap items-center gap-x-4 gap-y-2"
             onSubmit={(event) => event.preventDefault()}
           >
             <SearchInput
               name="q"
-              label="Find by site, string, plane or words"
-              placeholder="Site, string, plane"
+              label={lowOutputPage.findBySiteString}
+              placeholder={lowOutputPage.siteStringPlane}
               value={view.q}
               onChange={(q) => setView({ q }, 'typed')}
             />
             <Choice
               inline
-              label="Site"
+              label={lowOutputPage.site}
               value={view.site}
-              options={[{ value: 'all', label: 'all' }, ...sites.map(([value, label]) => ({ value, label }))]}
+              options={[
+                { value: 'all', label: lowOutputPage.all },
+                ...sites.map(([value, label]) => ({ value, label })),
+              ]}
               onChange={(site) => setView({ site })}
             />
             <Choice
               inline
-              label="Looks like"
+              label={lowOutputPage.looksLike}
               value={view.signature}
               options={[
-                { value: 'all', label: 'anything' },
+                { value: 'all', label: lowOutputPage.anything },
                 ...SIGNATURES.map((s) => ({ value: s, label: SIGNATURE_WORDS[s].toLowerCase() })),
               ]}
               onChange={(value) => setView({ signature: SIGNATURES.find((s) => s === value) ?? 'all' })}
             />
             <Choice
               inline
-              label="Case"
+              label={lowOutputPage.case}
               value={view.case}
               options={[
-                { value: 'all', label: 'with or without' },
-                { value: 'open', label: 'with a case' },
-                { value: 'none', label: 'without a case' },
+                { value: 'all', label: lowOutputPage.withOrWithout },
+                { value: 'open', label: lowOutputPage.withACase },
+                { value: 'none', label: lowOutputPage.withoutACase },
               ]}
               onChange={(value) => setView({ case: value === 'open' || value === 'none' ? value : 'all' })}
             />
@@ -226,7 +235,7 @@ function Page({ low, saved, view: asked, defaults }: Props) {
             <SavedViews list="low_output" path={paths.lowOutput()} query={query} initial={saved} />
           </div>
           <Table
-            caption="Strings that make less than they should"
+            caption={lowOutputPage.stringsThatMakeLess}
             columns={columnsFor(low)}
             rows={rows}
             rowKey={(r) => r.string.id}
@@ -235,13 +244,9 @@ function Page({ low, saved, view: asked, defaults }: Props) {
               const sort = LOW_SORTS.find((k) => k === key);
               if (sort) setView({ sort, order: descending ? 'down' : 'up' });
             }}
-            empty={<p className="py-4 text-ink-2">No low string is like that. Take a filter away.</p>}
+            empty={<p className="py-4 text-ink-2">{lowOutputPage.noLowStringIs}</p>}
           />
-          <p className="mt-3 text-xs text-ink-3">
-            As each string’s newest judged day found it, over the last five days with enough sun; figures of
-            loss with their middle 90 %. Held against the strings of its plane, or against the model where
-            fewer than five are alike.
-          </p>
+          <p className="mt-3 text-xs text-ink-3">{lowOutputPage.asEachStringsNewest}</p>
         </Sheet>
       )}
     </>

@@ -3,19 +3,19 @@ import { Tag, type Tone } from '../../components/ui/Tag';
 import type { SlotRef } from '../../components/placements/evidence';
 import { Button } from '../../components/ui/Button';
 import { amperes, percent } from '../../drawings/numbers';
-import { clockSeconds } from '../../drawings/times';
 import type { IsolationFindingView, IsolationRun } from '../../schemas/api/isolation';
 import { unitName } from '../../components/placements/suspects';
+import { isolationResult } from '../../words/membership';
 
 type Unit = IsolationFindingView['units'][number];
 type Input = IsolationFindingView['inputs'][number];
 
 const FATES: Record<Unit['fate'], { words: string; tone: Tone; shape: string }> = {
-  member_dropped: { words: 'Went to zero', tone: 'petrol', shape: '▁' },
-  member_kept: { words: 'Kept its current', tone: 'rust', shape: '▮' },
-  other_dropped: { words: 'Went to zero too', tone: 'rust', shape: '▁' },
-  other_kept: { words: 'Kept its current', tone: 'plain', shape: '▮' },
-  not_told: { words: 'Nothing told', tone: 'outline', shape: '' },
+  member_dropped: { words: isolationResult.wentToZero, tone: 'petrol', shape: '▁' },
+  member_kept: { words: isolationResult.keptItsCurrent, tone: 'rust', shape: '▮' },
+  other_dropped: { words: isolationResult.wentToZeroToo, tone: 'rust', shape: '▁' },
+  other_kept: { words: isolationResult.keptItsCurrent, tone: 'plain', shape: '▮' },
+  not_told: { words: isolationResult.nothingTold, tone: 'outline', shape: '' },
 };
 const ORDER: Unit['fate'][] = ['other_dropped', 'member_kept', 'not_told', 'member_dropped', 'other_kept'];
 
@@ -28,7 +28,7 @@ interface Props {
 
 /** "between 14:02:31 and 14:02:41": reports are apart, so what happened lies between two. */
 export function betweenWords(b: { after: string; by: string }, timeZone: string): string {
-  return `between ${clockSeconds(b.after, timeZone)} and ${clockSeconds(b.by, timeZone)}`;
+  return isolationResult.betweenAnd(b.after, timeZone, b.by);
 }
 
 /** Unit by unit: the string's own, and whoever of the others fell with it; and what the inputs carried. */
@@ -41,7 +41,7 @@ export function IsolationResult({ run, timeZone, strings, onReview }: Props) {
   const columns: Column<Unit>[] = [
     {
       key: 'unit',
-      label: 'Unit',
+      label: isolationResult.unit,
       cell: (u) => (
         <>
           <span className="font-semibold">{unitName(u)}</span>
@@ -49,18 +49,18 @@ export function IsolationResult({ run, timeZone, strings, onReview }: Props) {
         </>
       ),
     },
-    { key: 'before', label: 'Before', numeric: true, cell: (u) => amperes(u.before) },
-    { key: 'during', label: 'Since', numeric: true, cell: (u) => amperes(u.during) },
+    { key: 'before', label: isolationResult.before, numeric: true, cell: (u) => amperes(u.before) },
+    { key: 'during', label: isolationResult.since, numeric: true, cell: (u) => amperes(u.during) },
     {
       key: 'fell',
-      label: 'Fell',
+      label: isolationResult.fell,
       from: 'sm',
       className: 'text-sm text-ink-2',
       cell: (u) => (u.dropped ? betweenWords(u.dropped, timeZone) : ''),
     },
     {
       key: 'fate',
-      label: 'Its current',
+      label: isolationResult.itsCurrent,
       cell: (u) => (
         <Tag tone={FATES[u.fate].tone} shape={FATES[u.fate].shape}>
           {FATES[u.fate].words}
@@ -71,7 +71,7 @@ export function IsolationResult({ run, timeZone, strings, onReview }: Props) {
   const inputs: Column<Input>[] = [
     {
       key: 'name',
-      label: 'Input',
+      label: isolationResult.input,
       cell: (i) => (
         <>
           <span className="font-medium">{i.name}</span>
@@ -79,9 +79,9 @@ export function IsolationResult({ run, timeZone, strings, onReview }: Props) {
         </>
       ),
     },
-    { key: 'before', label: 'Before', numeric: true, cell: (i) => amperes(i.before) },
-    { key: 'during', label: 'Since', numeric: true, cell: (i) => amperes(i.during) },
-    { key: 'lost', label: 'Lost beyond the others', numeric: true, cell: (i) => percent(i.lost) },
+    { key: 'before', label: isolationResult.before, numeric: true, cell: (i) => amperes(i.before) },
+    { key: 'during', label: isolationResult.since, numeric: true, cell: (i) => amperes(i.during) },
+    { key: 'lost', label: isolationResult.lostBeyondTheOthers, numeric: true, cell: (i) => percent(i.lost) },
   ];
   const ref = (u: Unit): SlotRef | null => {
     const string = strings.find((s) => s.name === u.string);
@@ -96,34 +96,35 @@ export function IsolationResult({ run, timeZone, strings, onReview }: Props) {
     <div className="grid gap-4">
       {(finding.dropped ?? finding.returned) && (
         <p className="text-sm text-ink-2">
-          {finding.dropped && <>Current fell {betweenWords(finding.dropped, timeZone)}</>}
-          {finding.returned && <>, and came back {betweenWords(finding.returned, timeZone)}</>}. Times are
-          those of reports: what happened lies between two of them.
+          {finding.dropped && <>{isolationResult.currentFell(betweenWords(finding.dropped, timeZone))}</>}
+          {finding.returned && <>{isolationResult.andCameBack(betweenWords(finding.returned, timeZone))}</>}
+          {isolationResult.timesAreThoseOf}
         </p>
       )}
       {rows.length > 0 && (
         <Table
-          caption={`Units of ${run.stringName} and whoever fell with them`}
+          caption={isolationResult.unitsOfAndWhoever(run.stringName)}
           columns={columns}
           rows={rows}
           rowKey={(u) => u.serial}
         />
       )}
-      {others > 0 && (
-        <p className="text-sm text-ink-2">
-          {others} units of other strings kept their current, as they should.
-        </p>
-      )}
+      {others > 0 && <p className="text-sm text-ink-2">{isolationResult.unitsOfOtherStrings(others)}</p>}
       {finding.outcome === 'told' && firstRef && onReview && (
         <div>
-          <Button onClick={() => onReview(firstRef, secondRef)}>Review the move</Button>
+          <Button onClick={() => onReview(firstRef, secondRef)}>{isolationResult.reviewTheMove}</Button>
         </div>
       )}
       <details>
         <summary className="target inline-flex cursor-pointer items-center text-sm text-petrol">
-          What the inputs carried
+          {isolationResult.whatTheInputsCarried}
         </summary>
-        <Table caption="Inputs" columns={inputs} rows={finding.inputs} rowKey={(i) => i.name} />
+        <Table
+          caption={isolationResult.inputs}
+          columns={inputs}
+          rows={finding.inputs}
+          rowKey={(i) => i.name}
+        />
       </details>
     </div>
   );

@@ -7,7 +7,6 @@ import { NotRead } from '../../components/ui/NotRead';
 import { Notice } from '../../components/ui/Notice';
 import { Sheet } from '../../components/ui/Sheet';
 import { SiteTime, useNow } from '../../components/ui/Time';
-import { duration } from '../../drawings/times';
 import { api } from '../../lib/api';
 import { queryClient } from '../../lib/query-client';
 import type { StringNow } from '../../schemas/api/now';
@@ -18,6 +17,7 @@ import { IsolationResult } from './IsolationResult';
 import { isolationModel } from './chart';
 import { isolationKey, isolationQuery } from './query';
 import { isolationWords, unbroken } from './words';
+import { isolationSheet } from '../../words/membership';
 
 interface Props {
   siteId: string;
@@ -45,12 +45,13 @@ function Said({ run }: { run: IsolationRun }) {
 function Who({ run, at, timeZone }: { run: IsolationRun; at: string; timeZone: string }) {
   return (
     <p className="text-sm text-ink-2">
-      <SiteTime at={run.startedAt} now={at} timeZone={timeZone} zone /> by {run.startedBy}; on site{' '}
-      {run.personOnSite}
+      <SiteTime at={run.startedAt} now={at} timeZone={timeZone} zone />
+      {isolationSheet.byOnSite(run.startedBy, run.personOnSite)}
       {run.stoppedAt && (
         <>
-          ; ended <SiteTime at={run.stoppedAt} now={at} timeZone={timeZone} />
-          {run.stoppedBy ? ` by ${run.stoppedBy}` : ', its time was up'}
+          {isolationSheet.ended}
+          <SiteTime at={run.stoppedAt} now={at} timeZone={timeZone} />
+          {run.stoppedBy ? isolationSheet.byStoppedBy(run.stoppedBy) : isolationSheet.itsTimeWasUp}
         </>
       )}
     </p>
@@ -80,17 +81,16 @@ export function IsolationSheet(props: Props) {
     <>
       <Sheet
         id="isolation"
-        title={open ? `Watching ${open.stringName}` : 'The decisive way: isolate one string'}
+        title={
+          open ? isolationSheet.watchingStringName(open.stringName) : isolationSheet.theDecisiveWayIsolate
+        }
         flush
-        aside={open ? `ends by itself in ${duration(left)}` : undefined}
+        aside={open ? isolationSheet.endsByItselfIn(left) : undefined}
       >
         <div className="mb-4">
-          <Caution strong="By the string’s load-break device only, never a connector under load.">
-            An arc kills and burns. Wakeline only watches: it switches nothing, and a current of zero is no
-            proof that anything is dead. Qualified people, the site’s procedure and local code first.
-          </Caution>
+          <Caution strong={isolationSheet.byTheStringsLoad}>{isolationSheet.anArcKillsAnd}</Caution>
         </div>
-        <NotRead error={error} title="The watch could not be read again" className="mb-4" />
+        <NotRead error={error} title={isolationSheet.theWatchCouldNot} className="mb-4" />
         {open ? (
           <div className="grid gap-4">
             <Said run={open} />
@@ -104,28 +104,24 @@ export function IsolationSheet(props: Props) {
             )}
             <IsolationResult run={open} timeZone={timeZone} strings={strings} onReview={null} />
             {stop.error && (
-              <Notice kind="failed" title="It could not be stopped">
+              <Notice kind="failed" title={isolationSheet.itCouldNotBe}>
                 {stop.error.message}
               </Notice>
             )}
             {mayRun && (
               <div>
                 <Button weight="primary" onClick={() => stop.mutate()} disabled={stop.isPending}>
-                  {stop.isPending ? 'Stopping …' : 'Stop watching and keep the result'}
+                  {stop.isPending ? isolationSheet.stopping : isolationSheet.stopWatchingAndKeep}
                 </Button>
                 <p className="mt-1.5 text-sm text-ink-2">
-                  Two reports in a row decide, one each {data.reportIntervalS} s. Afterwards the person closes
-                  the string again by the same device.
+                  {isolationSheet.twoReportsInRow(data.reportIntervalS)}
                 </p>
               </div>
             )}
           </div>
         ) : mayRun ? (
           <div className="max-w-[520px]">
-            <p className="mb-3 text-ink-2">
-              A person isolates one string; the page shows whose current goes to zero: who is in it, who is
-              not, and who of the others is.
-            </p>
+            <p className="mb-3 text-ink-2">{isolationSheet.aPersonIsolatesOne}</p>
             <IsolationForm
               siteId={siteId}
               strings={strings}
@@ -135,11 +131,16 @@ export function IsolationSheet(props: Props) {
             />
           </div>
         ) : (
-          <p>A manager or a technician starts it, with a qualified person at the switch.</p>
+          <p>{isolationSheet.aManagerOrA}</p>
         )}
       </Sheet>
       {runs.length > 0 && (
-        <Sheet id="isolations" title="What was found before" flush aside={`${runs.length} kept`}>
+        <Sheet
+          id="isolations"
+          title={isolationSheet.whatWasFoundBefore}
+          flush
+          aside={isolationSheet.runsKept(runs.length)}
+        >
           <ol className="grid gap-5">
             {runs.map((run) => (
               <li key={run.id} className="border-b border-rule-faint pb-4 last:border-b-0 last:pb-0">
@@ -147,7 +148,7 @@ export function IsolationSheet(props: Props) {
                 <Who run={run} at={data.at} timeZone={timeZone} />
                 <details className="mt-2" open={run.id === last?.id && run.finding.outcome === 'told'}>
                   <summary className="target inline-flex cursor-pointer items-center text-sm text-petrol">
-                    The evidence
+                    {isolationSheet.theEvidence}
                   </summary>
                   <div className="mt-2 grid gap-4">
                     {run.id === last?.id && data.currents && (

@@ -9,6 +9,7 @@ import { queryClient } from '../../lib/query-client';
 import type { StringNow } from '../../schemas/api/now';
 import type { IsolationPage, IsolationStart } from '../../schemas/api/isolation';
 import { paths } from '../../schemas/paths';
+import { isolationStart } from '../../words/membership';
 
 interface Props {
   siteId: string;
@@ -36,11 +37,9 @@ export function IsolationForm({ siteId, strings, string, onString, onStarted }: 
   const submit = (event: SubmitEvent) => {
     event.preventDefault();
     const missing: Faults = {
-      ...(string ? {} : { string: 'Choose the string that will be isolated.' }),
-      ...(personOnSite.trim().length < 2
-        ? { personOnSite: 'Enter the name of the person who isolates the string.' }
-        : {}),
-      ...(caution ? {} : { caution: 'Confirm that it is isolated by a load-break device only.' }),
+      ...(string ? {} : { string: isolationStart.chooseTheStringThat }),
+      ...(personOnSite.trim().length < 2 ? { personOnSite: isolationStart.enterTheNameOf } : {}),
+      ...(caution ? {} : { caution: isolationStart.confirmThatItIs }),
     };
     setFaults(missing);
     if (Object.keys(missing).length === 0)
@@ -51,19 +50,22 @@ export function IsolationForm({ siteId, strings, string, onString, onStarted }: 
   return (
     <form onSubmit={submit} noValidate className="grid gap-3">
       {start.error && (
-        <Notice kind="failed" title={start.error instanceof ApiError ? start.error.title : 'It did not work'}>
+        <Notice
+          kind="failed"
+          title={start.error instanceof ApiError ? start.error.title : isolationStart.itDidNotWork}
+        >
           {start.error.message}
         </Notice>
       )}
       <Choice
         id="isolate-string"
-        label="String to isolate"
+        label={isolationStart.stringToIsolate}
         value={string}
         options={[
-          { value: '', label: 'Choose a string' },
+          { value: '', label: isolationStart.chooseAString },
           ...strings.map((s) => ({
             value: s.id,
-            label: s.current === null ? s.name : `${s.name}, ${s.current.toFixed(1)} A now`,
+            label: s.current === null ? s.name : isolationStart.nameCurrentANow(s.name, s.current.toFixed(1)),
           })),
         ]}
         onChange={onString}
@@ -72,21 +74,21 @@ export function IsolationForm({ siteId, strings, string, onString, onStarted }: 
           faults.string
             ? null
             : mute
-              ? 'Its units report nothing: only the input’s current will tell.'
+              ? isolationStart.itsUnitsReportNothing
               : chosen && (chosen.current ?? 0) < 0.5
-                ? 'It carries hardly any current now: wait until the inverter runs.'
-                : 'It must carry current now, or nothing can fall.'
+                ? isolationStart.itCarriesHardlyAny
+                : isolationStart.itMustCarryCurrent
         }
       />
       <Field
-        label="Who isolates it"
+        label={isolationStart.whoIsolatesIt}
         name="personOnSite"
         autoComplete="name"
         maxLength={120}
         value={personOnSite}
         onChange={(e) => setPerson(e.target.value)}
         error={faults.personOnSite}
-        hint="First and last name; it is kept with the result."
+        hint={isolationStart.firstAndLastName}
       />
       <div>
         <label className="flex min-h-[44px] items-center gap-3">
@@ -97,7 +99,7 @@ export function IsolationForm({ siteId, strings, string, onString, onStarted }: 
             aria-invalid={faults.caution ? true : undefined}
             className="h-5 w-5 flex-none accent-petrol"
           />
-          <span>A qualified person is at the string’s load-break device and opens nothing else.</span>
+          <span>{isolationStart.aQualifiedPersonIs}</span>
         </label>
         {faults.caution && (
           <p role="alert" className="text-sm font-medium text-rust-ink">
@@ -106,7 +108,7 @@ export function IsolationForm({ siteId, strings, string, onString, onStarted }: 
         )}
       </div>
       <Button type="submit" weight="primary" disabled={start.isPending}>
-        {start.isPending ? 'Starting …' : 'Start watching'}
+        {start.isPending ? isolationStart.starting : isolationStart.startWatching}
       </Button>
     </form>
   );

@@ -17,6 +17,7 @@ import { IsolationSheet } from './IsolationSheet';
 import { isolationKey, isolationQuery } from './query';
 import { SuspectsSheet } from './SuspectsSheet';
 import { membershipWords, unbroken } from './words';
+import { membershipBoard } from '../../words/membership';
 
 const DEFAULTS: MembershipView = { hours: '6', unit: '' };
 
@@ -61,9 +62,9 @@ export function MembershipBoard({ initial, view: asked, mayWrite }: Props) {
     <>
       <LiveHeading
         crumbs={[
-          { label: 'Commissioning', href: paths.commissioning() },
+          { label: membershipBoard.commissioning, href: paths.commissioning() },
           { label: page.site.name, href: paths.commissioningSite(id) },
-          { label: 'Roll call', href: paths.rollCall(id) },
+          { label: membershipBoard.rollCall, href: paths.rollCall(id) },
         ]}
         finding={{
           heading: unbroken(words.heading),
@@ -77,28 +78,28 @@ export function MembershipBoard({ initial, view: asked, mayWrite }: Props) {
         timeZone={timeZone}
       />
       <div className="mb-4 grid gap-3 empty:hidden">
-        <NotRead error={error} title="The currents could not be read again" onRetry={() => refetch()} />
+        <NotRead error={error} title={membershipBoard.theCurrentsCouldNot} onRetry={() => refetch()} />
         {done && (
           <Notice kind="done" title={done}>
-            The loggers get the new roster. Reports from before the change no longer count for these units.{' '}
+            {membershipBoard.theLoggersGetThe}
             <a href={paths.asBuiltHistory(id)} className="text-petrol hover:underline">
-              See the history
+              {membershipBoard.seeTheHistory}
             </a>
           </Notice>
         )}
       </div>
       <div className="mb-3 flex flex-wrap items-center gap-x-3">
         <Segmented
-          label="Reports of"
+          label={membershipBoard.reportsOf}
           options={[
-            { value: '2', label: 'Last 2 hours' },
-            { value: '6', label: '6 hours' },
-            { value: '24', label: '24 hours' },
+            { value: '2', label: membershipBoard.last2Hours },
+            { value: '6', label: membershipBoard.n6Hours },
+            { value: '24', label: membershipBoard.n24Hours },
           ]}
           value={view.hours}
           onChange={(hours) => change({ hours })}
         />
-        {isFetching && <span className="text-sm text-ink-2">reading …</span>}
+        {isFetching && <span className="text-sm text-ink-2">{membershipBoard.reading}</span>}
       </div>
       <div className="grid gap-5 xl:grid-cols-2">
         <div className="grid min-w-0 content-start gap-5">
@@ -136,11 +137,7 @@ export function MembershipBoard({ initial, view: asked, mayWrite }: Props) {
           onClose={() => setReview(null)}
           onDone={(body) => {
             setReview(null);
-            setDone(
-              body.kind === 'swap'
-                ? 'The two units are exchanged on the as-built'
-                : 'The unit is moved on the as-built',
-            );
+            setDone(body.kind === 'swap' ? membershipBoard.theTwoUnitsAre : membershipBoard.theUnitIsMoved);
             void client.invalidateQueries({ queryKey: ['membership', id] });
             void client.invalidateQueries({ queryKey: isolationKey(id) });
           }}

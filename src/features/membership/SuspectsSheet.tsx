@@ -9,6 +9,7 @@ import { withQuery } from '../../lib/api';
 import type { MembershipPage, MembershipSuspect } from '../../schemas/api/membership';
 import { paths } from '../../schemas/paths';
 import { suspectModel } from './chart';
+import { suspectsSheet } from '../../words/membership';
 
 interface Props {
   page: MembershipPage;
@@ -28,7 +29,7 @@ const KEYS = { rust: 'bg-rust', slate: 'bg-slate', petrol: 'bg-petrol' } as cons
 function Legend({ suspect: s }: { suspect: MembershipSuspect }) {
   const keys: { tone: keyof typeof KEYS; name: string }[] = [
     { tone: 'rust', name: unitName(s) },
-    { tone: 'slate', name: `${s.string}, its string` },
+    { tone: 'slate', name: suspectsSheet.itsString(s.string) },
   ];
   if (s.series.otherName) keys.push({ tone: 'petrol', name: s.series.otherName });
   return (
@@ -63,7 +64,7 @@ function Suspect({
       <p className="max-w-[720px] text-[15px] leading-[22px]">{suspectWords(group)}</p>
       <div className="mt-2.5 flex flex-wrap gap-2">
         <Button onClick={() => setShown(!shown)} aria-expanded={shown}>
-          {shown ? 'Hide the currents' : 'See the currents'}
+          {shown ? suspectsSheet.hideTheCurrents : suspectsSheet.seeTheCurrents}
         </Button>
         {elsewhere && mayWrite && (
           <Button
@@ -74,11 +75,11 @@ function Suspect({
               )
             }
           >
-            Review the move
+            {suspectsSheet.reviewTheMove}
           </Button>
         )}
         {elsewhere && mayWrite && (
-          <Button onClick={() => onIsolate(a.stringId)}>Isolate {a.string} to be certain</Button>
+          <Button onClick={() => onIsolate(a.stringId)}>{suspectsSheet.isolateToBeCertain(a.string)}</Button>
         )}
       </div>
       {shown && (
@@ -106,7 +107,7 @@ export function SuspectsSheet(props: Props) {
   return (
     <Sheet
       id="suspects"
-      title="Wired differently from the drawing?"
+      title={suspectsSheet.wiredDifferentlyFromThe}
       flush
       aside={
         <a
@@ -114,7 +115,7 @@ export function SuspectsSheet(props: Props) {
           download
           className="text-petrol hover:underline"
         >
-          Every unit as CSV
+          {suspectsSheet.everyUnitAsCSV}
         </a>
       }
     >
@@ -127,33 +128,27 @@ export function SuspectsSheet(props: Props) {
       ) : (
         <Notice
           kind={counts.here > 0 ? 'done' : 'empty'}
-          title={
-            counts.here > 0
-              ? 'No unit carries another string’s current, as far as it can be told'
-              : 'Nothing can be told from these hours'
-          }
+          title={counts.here > 0 ? suspectsSheet.noUnitCarriesAnother : suspectsSheet.nothingCanBeTold}
         >
-          {window.withCurrent} of {window.steps} steps of {window.stepS / 60} min had current.
+          {suspectsSheet.ofStepsOfMin(window.withCurrent, window.steps, window.stepS)}
         </Notice>
       )}
       {page.reasons.length > 0 && (
         <div className="mt-4 border-t border-rule-faint pt-3">
-          <h3 className="mb-1 text-sm font-medium">Can’t tell for {counts.cantTell} units</h3>
+          <h3 className="mb-1 text-sm font-medium">{suspectsSheet.cantTellForUnits(counts.cantTell)}</h3>
           <ul className="grid gap-1 text-sm text-ink-2">
             {page.reasons.map((r) => (
               <li key={r.why}>
-                {r.units} in {r.strings.length <= 8 ? r.strings.join(', ') : `${r.strings.length} strings`}:{' '}
-                {r.why}
+                {suspectsSheet.unitsInStrings8(r.units, r.strings.length, r.strings.join(', '), r.why)}
               </li>
             ))}
           </ul>
         </div>
       )}
       <p className="mt-4 text-sm text-ink-2">
-        Units in series carry one current. What counts are differences against the units’ accuracy, not
-        whether currents rise and fall together. It names another string, never a position.{' '}
+        {suspectsSheet.unitsInSeriesCarry}
         <a href={paths.methods()} className="text-petrol hover:underline">
-          How it is judged
+          {suspectsSheet.howItIsJudged}
         </a>
       </p>
     </Sheet>

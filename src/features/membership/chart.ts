@@ -2,18 +2,19 @@ import type { ChartLine, ChartModel } from '../../components/charts/model';
 import type { IsolationCurrents, IsolationRun } from '../../schemas/api/isolation';
 import type { MembershipSuspect } from '../../schemas/api/membership';
 import { unitName } from '../../components/placements/suspects';
+import { membershipChart } from '../../words/membership';
 
 /** A unit's current against its own string's and the other's. */
 export function suspectModel(s: MembershipSuspect, timeZone: string): ChartModel {
   const { at, unit, own, other, otherName } = s.series;
   // the unit last: it lies on the line of the string whose current it carries
   const lines: ChartLine[] = [
-    { name: `${s.string}, its string on the drawing`, at, values: own, tone: 'slate' },
+    { name: membershipChart.itsStringOnThe(s.string), at, values: own, tone: 'slate' },
     ...(otherName ? [{ name: otherName, at, values: other, tone: 'petrol' as const }] : []),
     { name: unitName(s), at, values: unit, tone: 'rust' },
   ];
   return {
-    title: `Current of ${unitName(s)}`,
+    title: membershipChart.currentOf(unitName(s)),
     unit: 'A',
     digits: 2,
     timeZone,
@@ -34,7 +35,7 @@ export function isolationModel(run: IsolationRun, currents: IsolationCurrents, t
   const seconds = (iso: string): number => new Date(iso).getTime() / 1000;
   const { dropped, returned } = run.finding;
   return {
-    title: `Currents while ${run.stringName} is isolated`,
+    title: membershipChart.currentsWhileIsIsolated(run.stringName),
     unit: 'A',
     digits: 2,
     timeZone,
@@ -53,13 +54,15 @@ export function isolationModel(run: IsolationRun, currents: IsolationCurrents, t
     ],
     nights: [],
     marks: [
-      { from: seconds(run.startedAt), to: null, words: 'The watch began', tone: 'slate' },
+      { from: seconds(run.startedAt), to: null, words: membershipChart.theWatchBegan, tone: 'slate' },
       ...(dropped
         ? [
             {
               from: seconds(dropped.after),
               to: returned ? seconds(returned.by) : seconds(dropped.by),
-              words: returned ? `${run.stringName} without current` : `${run.stringName} fell`,
+              words: returned
+                ? membershipChart.withoutCurrent(run.stringName)
+                : membershipChart.stringNameFell(run.stringName),
               tone: 'petrol' as const,
             },
           ]

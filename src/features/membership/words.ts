@@ -1,7 +1,8 @@
 import { groupsOf, unitName } from '../../components/placements/suspects';
-import { counted, countAtStart, listed, number } from '../../drawings/numbers';
+import { listed, number } from '../../drawings/numbers';
 import type { IsolationPage, IsolationRun } from '../../schemas/api/isolation';
 import type { MembershipPage } from '../../schemas/api/membership';
+import { membershipWordsWords } from '../../words/membership';
 
 /** The sentences of the page on who is in which string. */
 
@@ -40,68 +41,65 @@ export function membershipWords(page: MembershipPage, isolation: IsolationPage):
 function currentWords(page: MembershipPage): Said {
   const { counts, window, daylight } = page;
   const judged = counts.here + counts.elsewhere + counts.cantTell + counts.fitsNone;
-  const hours = `the last ${window.hours} hours`;
+  const hours = membershipWordsWords.theLastHours(window.hours);
   const groups = groupsOf(page.suspects.filter((s) => s.outcome !== 'fits_none'));
   const [first] = groups;
-  const decide = 'Isolate one string to be certain.';
+  const decide = membershipWordsWords.isolateOneStringTo;
   if (first) {
     const [a, b] = first;
     const heading = b
-      ? `${unitName(a)} and ${unitName(b)} ${a.outcome === 'elsewhere' && b.outcome === 'elsewhere' ? 'look' : 'may be'} exchanged${groups.length > 1 ? `, and ${counted(groups.length - 1, 'more place')} ${groups.length === 2 ? 'doesn’t' : 'don’t'} fit` : ''}`
+      ? membershipWordsWords.aAndBA(unitName(a), unitName(b), a.outcome, b.outcome, groups.length)
       : groups.length === 1
         ? a.otherString
-          ? `${unitName(a)} carries the current of ${a.otherString}`
-          : `${unitName(a)} does not carry the current of ${a.string}`
-        : `${countAtStart(counts.elsewhere)} units don’t carry their string’s current`;
+          ? membershipWordsWords.carriesTheCurrentOf(unitName(a), a.otherString)
+          : membershipWordsWords.doesNotCarryThe(unitName(a), a.string)
+        : membershipWordsWords.unitsDontCarryTheir(counts.elsewhere);
     return {
       heading,
-      strong: 'Read the labels there before anything is changed.',
-      rest: `${number(counts.here)} of ${counted(judged, 'unit')} carry the current of their own string.`,
+      strong: membershipWordsWords.readTheLabelsThere,
+      rest: membershipWordsWords.ofCarryTheCurrent(counts.here, judged),
     };
   }
   if (judged === 0)
     return {
-      heading: 'No unit here tells its current',
+      heading: membershipWordsWords.noUnitHereTells,
       strong: '',
-      rest:
-        counts.mute > 0
-          ? 'According to the type entered its units report nothing: only the input’s current falls when a string is isolated.'
-          : 'The as-built holds no units yet.',
+      rest: counts.mute > 0 ? membershipWordsWords.accordingToTheType : membershipWordsWords.theAsBuiltHolds,
     };
   if (window.steps === 0)
     return {
-      heading: 'Can’t tell yet: no unit has told its current',
-      strong: 'Units report once they have answered the roll call',
-      rest: `and while there is light; none did in ${hours}.`,
+      heading: membershipWordsWords.cantTellYetNo,
+      strong: membershipWordsWords.unitsReportOnceThey,
+      rest: membershipWordsWords.andWhileThereIs(hours),
     };
   if (window.withCurrent === 0)
     return {
-      heading: 'Can’t tell yet: no string carried current',
-      strong: daylight ? 'The inverters did not run' : 'It is night there',
-      rest: `in ${hours}. Come back when they have run for half an hour.`,
+      heading: membershipWordsWords.cantTellYetNoString,
+      strong: daylight ? membershipWordsWords.theInvertersDidNot : membershipWordsWords.itIsNightThere,
+      rest: membershipWordsWords.inComeBackWhen(hours),
     };
   if (counts.fitsNone > 0)
     return {
-      heading: `${countAtStart(counts.fitsNone)} ${counts.fitsNone === 1 ? 'unit fits' : 'units fit'} no string’s current`,
-      strong: 'Its measurement may be wrong.',
-      rest: `${number(counts.here)} of ${counted(judged, 'unit')} carry the current of their own string.`,
+      heading: membershipWordsWords.noStringsCurrent(counts.fitsNone),
+      strong: membershipWordsWords.itsMeasurementMayBe,
+      rest: membershipWordsWords.ofCarryTheCurrent(counts.here, judged),
     };
   if (counts.cantTell === judged)
     return {
-      heading: `Can’t tell for any of ${counted(judged, 'unit')}`,
-      strong: 'The strings’ currents are too alike',
-      rest: `in ${hours}, or too few. ${decide}`,
+      heading: membershipWordsWords.cantTellForAny(judged),
+      strong: membershipWordsWords.theStringsCurrentsAre,
+      rest: membershipWordsWords.inOrTooFew(hours, decide),
     };
   if (counts.cantTell > 0)
     return {
-      heading: `${number(counts.here)} of ${counted(judged, 'unit')} carry the current of their string`,
-      strong: `For ${number(counts.cantTell)} it can’t be told:`,
-      rest: `strings in the same light carry the same current. ${decide}`,
+      heading: membershipWordsWords.ofCarryTheCurrentOf(counts.here, judged),
+      strong: membershipWordsWords.forItCantBe(counts.cantTell),
+      rest: membershipWordsWords.stringsInTheSame(decide),
     };
   return {
-    heading: `All ${number(judged)} units carry the current of their string`,
+    heading: membershipWordsWords.allUnitsCarryThe(judged),
     strong: '',
-    rest: `By the reports of ${hours}.`,
+    rest: membershipWordsWords.byTheReportsOf(hours),
   };
 }
 
@@ -109,11 +107,11 @@ const names = (finding: Finding, fate: Finding['units'][number]['fate']): string
   finding.units.filter((u) => u.fate === fate).map((u) => unitName(u));
 
 const REASONS: Record<NonNullable<Finding['reason']>, string> = {
-  no_current_before: 'It carried hardly any current before: an isolated string can’t be seen.',
-  no_reports: 'Nothing of it was reported before the start.',
-  everything_stopped: 'Every string stopped together: the inverter, the grid or dusk, and no single string.',
-  too_little_current: 'Too little light: currents are too small to part zero from the rest.',
-  nothing_beside: 'No other string reports beside it, so a cloud and an open switch look alike.',
+  no_current_before: membershipWordsWords.itCarriedHardlyAny,
+  no_reports: membershipWordsWords.nothingOfItWas,
+  everything_stopped: membershipWordsWords.everyStringStoppedTogether,
+  too_little_current: membershipWordsWords.tooLittleLightCurrents,
+  nothing_beside: membershipWordsWords.noOtherStringReports,
 };
 
 /** What a watch shows, in a heading and a sentence. */
@@ -124,38 +122,41 @@ export function isolationWords(run: IsolationRun): Said {
     case 'watching':
       return over
         ? {
-            heading: `${string}: nobody’s current went to zero`,
-            strong: run.stoppedBy === null ? 'Its half hour was up.' : 'The watch was stopped before.',
-            rest: 'Nothing is concluded.',
+            heading: membershipWordsWords.nobodysCurrentWentTo(string),
+            strong:
+              run.stoppedBy === null
+                ? membershipWordsWords.itsHalfHourWas
+                : membershipWordsWords.theWatchWasStopped,
+            rest: membershipWordsWords.nothingIsConcluded,
           }
         : {
-            heading: `Watching ${string}: nothing has fallen yet`,
-            strong: `${run.personOnSite} may isolate it now,`,
-            rest: 'by its load-break device. Two reports in a row decide.',
+            heading: membershipWordsWords.watchingNothingHasFallen(string),
+            strong: membershipWordsWords.mayIsolateItNow(run.personOnSite),
+            rest: membershipWordsWords.byItsLoadBreak,
           };
     case 'cant_tell':
       return {
-        heading: `${string}: can’t tell`,
+        heading: membershipWordsWords.cantTell(string),
         strong: '',
         rest: finding.reason ? REASONS[finding.reason] : '',
       };
     case 'other_string':
       return {
-        heading: `Not ${string} but ${listed(finding.strings)} went to zero`,
-        strong: 'Another string was isolated than the one named,',
-        rest: 'or the drawing has their names exchanged. Check the mark on the switch.',
+        heading: membershipWordsWords.notButWentTo(string, listed(finding.strings)),
+        strong: membershipWordsWords.anotherStringWasIsolated,
+        rest: membershipWordsWords.orTheDrawingHas,
       };
     case 'several_strings':
       return {
-        heading: `${listed(finding.strings)} went to zero together`,
-        strong: 'More than one string was isolated:',
-        rest: 'who is in which of them this does not say. Isolate one alone.',
+        heading: membershipWordsWords.wentToZeroTogether(listed(finding.strings)),
+        strong: membershipWordsWords.moreThanOneString,
+        rest: membershipWordsWords.whoIsInWhich,
       };
     case 'input_only':
       return {
-        heading: `The input lost ${string}’s part`,
-        strong: 'Its units report nothing:',
-        rest: 'the input shows that a string of it was isolated, and never which units are in it.',
+        heading: membershipWordsWords.theInputLostPart(string),
+        strong: membershipWordsWords.itsUnitsReportNothing,
+        rest: membershipWordsWords.theInputShowsThat,
       };
     case 'told': {
       const gone = names(finding, 'member_dropped');
@@ -166,26 +167,28 @@ export function isolationWords(run: IsolationRun): Said {
         return {
           heading:
             untold === 0
-              ? `All ${number(gone.length)} units of ${string} are in it`
-              : `${counted(gone.length, 'unit')} ${gone.length === 1 ? 'is' : 'are'} in ${string}, ${number(untold)} told nothing`,
+              ? membershipWordsWords.allUnitsOfAre(gone.length, string)
+              : membershipWordsWords.inToldNothing(gone.length, string, untold),
           strong: '',
-          rest: 'No unit of another string went to zero with it.',
+          rest: membershipWordsWords.noUnitOfAnother,
         };
       return {
         heading: [
-          kept.length > 0 ? `${listed(kept)} kept ${kept.length === 1 ? 'its' : 'their'} current` : '',
-          joined.length > 0 ? `${listed(joined)} went to zero with ${string}` : '',
+          kept.length > 0 ? membershipWordsWords.keptCurrent(listed(kept), kept.length) : '',
+          joined.length > 0 ? membershipWordsWords.wentToZeroWith(listed(joined), string) : '',
         ]
           .filter(Boolean)
           .join('; '),
         strong: [
-          kept.length > 0 ? `${listed(kept)} ${kept.length === 1 ? 'is' : 'are'} not in ${string}` : '',
-          joined.length > 0 ? `${listed(joined)} ${joined.length === 1 ? 'is' : 'are'}` : '',
+          kept.length > 0 ? membershipWordsWords.notIn(listed(kept), kept.length, string) : '',
+          joined.length > 0
+            ? `${listed(joined)} ${joined.length === 1 ? membershipWordsWords.is : membershipWordsWords.are}`
+            : '',
         ]
           .filter(Boolean)
           .join('; ')
           .concat('.'),
-        rest: `${counted(gone.length, 'other unit')} of it ${gone.length === 1 ? 'is' : 'are'} confirmed.`,
+        rest: membershipWordsWords.ofItConfirmed(gone.length),
       };
     }
   }

@@ -3,6 +3,7 @@ import { Field } from '../../components/ui/Field';
 import { Segmented } from '../../components/ui/Segmented';
 import { EXAMPLES, type ExampleKey } from './examples';
 import { startOf, tried } from './example';
+import { liveExample } from '../../words/method-examples';
 
 /** A judgement to try out: its own function, with figures that the reader can change. */
 export function LiveExample({ which }: { which: ExampleKey }) {
@@ -15,14 +16,14 @@ export function LiveExample({ which }: { which: ExampleKey }) {
   return (
     <div className="border border-rule bg-film p-3 sm:p-4">
       <div className="mb-3 flex min-h-[24px] items-baseline justify-between gap-2">
-        <h3 className="font-semibold">Try it</h3>
+        <h3 className="font-semibold">{liveExample.tryIt}</h3>
         {changed && (
           <button
             type="button"
             className="text-sm text-petrol underline underline-offset-[3px]"
             onClick={() => setText(start)}
           >
-            Back to the start
+            {liveExample.backToTheStart}
           </button>
         )}
       </div>
@@ -70,7 +71,7 @@ export function LiveExample({ which }: { which: ExampleKey }) {
             </dl>
           </>
         ) : (
-          <p className="text-ink-2">Put the marked field right, and the answer stands here again.</p>
+          <p className="text-ink-2">{liveExample.putTheMarkedField}</p>
         )}
       </div>
     </div>

@@ -2,6 +2,7 @@ import type { ReactNode } from 'react';
 import { Sheet } from '../../components/ui/Sheet';
 import { Formula } from './math';
 import type { Note } from './note';
+import { methodSheet } from '../../words/methods';
 
 /** One judgement: what it computes, the formula, its source, its limits; the live example comes as children. */
 export function MethodSheet({ note, children }: { note: Note; children?: ReactNode }) {
@@ -18,13 +19,13 @@ export function MethodSheet({ note, children }: { note: Note; children?: ReactNo
             ))}
           </div>
           {note.where && <p className="text-ink-2">{note.where}</p>}
-          <h3 className="mt-3 font-semibold">Source</h3>
+          <h3 className="mt-3 font-semibold">{methodSheet.source}</h3>
           <ul className="list-disc pl-5 text-ink-2">
             {note.sources.map((source) => (
               <li key={source}>{source}</li>
             ))}
           </ul>
-          <h3 className="mt-3 font-semibold">Limits</h3>
+          <h3 className="mt-3 font-semibold">{methodSheet.limits}</h3>
           <ul className="list-disc pl-5 text-ink-2">
             {note.limits.map((limit) => (
               <li key={limit}>{limit}</li>

@@ -1,4 +1,5 @@
 import { typedNumber } from '../../schemas/typed-number';
+import { methodExamplesExample } from '../../words/method-examples';
 
 /** A small live example: fields with a starting value, and the judgement's own function behind them. */
 
@@ -60,12 +61,12 @@ export function tried(example: Example, text: Record<string, string>): Tried {
   if (Object.keys(faults).length > 0) return { outcome: null, faults };
   const number = (key: string): number => {
     const value = numbers.get(key);
-    if (value === undefined) throw new RangeError(`the example has no number ${key}`);
+    if (value === undefined) throw new RangeError(methodExamplesExample.theExampleHasNo(key));
     return value;
   };
   const choice = (key: string): string => {
     const input = example.inputs.find((i) => i.key === key);
-    if (input?.kind !== 'choice') throw new RangeError(`the example has no choice ${key}`);
+    if (input?.kind !== 'choice') throw new RangeError(methodExamplesExample.theExampleHasNoChoice(key));
     return input.options.find((o) => o.value === text[key])?.value ?? input.start;
   };
   return { outcome: example.answer({ number, choice }), faults };

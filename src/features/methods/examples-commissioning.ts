@@ -6,14 +6,39 @@ import { timeLimitOf } from '../../domain/verdicts/context';
 import { number, percent, quantity } from '../../drawings/numbers';
 import type { Example } from './example';
 import { MODULE } from './examples-electrical';
+import { examplesCommissioning } from '../../words/method-examples';
 
 const START = 1_700_000_000;
 
 export const rollCallExample: Example = {
   inputs: [
-    { kind: 'number', key: 'units', label: 'Units on the roster', min: 5, max: 600, whole: true, start: 184 },
-    { kind: 'number', key: 'heard', label: 'Heard so far', min: 0, max: 600, whole: true, start: 120 },
-    { kind: 'number', key: 'minutes', label: 'Since the start', unit: 'min', min: 1, max: 1440, start: 20 },
+    {
+      kind: 'number',
+      key: 'units',
+      label: examplesCommissioning.unitsOnTheRoster,
+      min: 5,
+      max: 600,
+      whole: true,
+      start: 184,
+    },
+    {
+      kind: 'number',
+      key: 'heard',
+      label: examplesCommissioning.heardSoFar,
+      min: 0,
+      max: 600,
+      whole: true,
+      start: 120,
+    },
+    {
+      kind: 'number',
+      key: 'minutes',
+      label: examplesCommissioning.sinceTheStart,
+      unit: 'min',
+      min: 1,
+      max: 1440,
+      start: 20,
+    },
   ],
   answer: ({ number: n }) => {
     const units = n('units');
@@ -24,7 +49,7 @@ export const rollCallExample: Example = {
       startedAtS: START,
       nowS: START + elapsed,
       units: Array.from({ length: units }, (_, i) => ({
-        group: `string ${i % Math.max(1, Math.round(units / 12))}`,
+        group: examplesCommissioning.stringI(i, Math.max(1, Math.round(units / 12))),
         gateway: null,
         heardAtS:
           i < heard
@@ -36,12 +61,18 @@ export const rollCallExample: Example = {
     return {
       finding:
         forecast.curve.length === 0
-          ? 'Too few have answered to say anything of the rest'
-          : `${number(forecast.expectedTotal)} of ${number(units)} are expected to answer in the end`,
+          ? examplesCommissioning.tooFewHaveAnswered
+          : examplesCommissioning.ofAreExpectedTo(forecast.expectedTotal, units),
       figures: [
-        { label: 'Middle 90 %', value: `${number(forecast.low)} to ${number(forecast.high)}` },
-        { label: 'Most of them within', value: minutes === null ? 'can’t tell' : quantity(minutes, 'min') },
-        { label: 'Left out: in strings that have not stirred', value: number(forecast.excluded) },
+        {
+          label: examplesCommissioning.middle90,
+          value: examplesCommissioning.lowToHigh(forecast.low, forecast.high),
+        },
+        {
+          label: examplesCommissioning.mostOfThemWithin,
+          value: minutes === null ? examplesCommissioning.cantTell : quantity(minutes, 'min'),
+        },
+        { label: examplesCommissioning.leftOutInStrings, value: number(forecast.excluded) },
       ],
     };
   },
@@ -50,31 +81,47 @@ export const rollCallExample: Example = {
 const LIGHTS = ['bright', 'dull', 'snow', 'night'] as const;
 export const shutdownTestExample: Example = {
   inputs: [
-    { kind: 'number', key: 'before', label: 'Before the command', unit: 'V', min: 0, max: 1500, start: 520 },
+    {
+      kind: 'number',
+      key: 'before',
+      label: examplesCommissioning.beforeTheCommand,
+      unit: 'V',
+      min: 0,
+      max: 1500,
+      start: 520,
+    },
     {
       kind: 'number',
       key: 'after',
-      label: 'Highest of three readings after it',
+      label: examplesCommissioning.highestOfThreeReadings,
       unit: 'V',
       min: 0,
       max: 1500,
       start: 8.4,
     },
-    { kind: 'number', key: 'seconds', label: 'Read after', unit: 's', min: 0, max: 600, start: 25 },
+    {
+      kind: 'number',
+      key: 'seconds',
+      label: examplesCommissioning.readAfter,
+      unit: 's',
+      min: 0,
+      max: 600,
+      start: 25,
+    },
     {
       kind: 'choice',
       key: 'instrument',
-      label: 'Read by',
+      label: examplesCommissioning.readBy,
       options: [
-        { value: 'rated', label: 'rated instrument, inverter end' },
-        { value: 'none', label: 'reports only' },
+        { value: 'rated', label: examplesCommissioning.ratedInstrumentInverterEnd },
+        { value: 'none', label: examplesCommissioning.reportsOnly },
       ],
       start: 'rated',
     },
     {
       kind: 'choice',
       key: 'light',
-      label: 'Light',
+      label: examplesCommissioning.light,
       options: LIGHTS.map((value) => ({ value, label: value })),
       start: 'bright',
     },
@@ -112,19 +159,19 @@ export const shutdownTestExample: Example = {
           conductorsStayUp: false,
         },
       ],
-      transmitters: [{ name: 'Transmitter 1', takenOffAlone: true }],
+      transmitters: [{ name: examplesCommissioning.transmitter1, takenOffAlone: true }],
     };
     const finding = judgeShutdownTest(input);
     return {
       finding: finding.strings[0]?.words ?? finding.headline,
       figures: [
-        { label: 'Result', value: finding.result.replace('_', ' ') },
+        { label: examplesCommissioning.result, value: finding.result.replace('_', ' ') },
         {
-          label: 'Limit',
-          value: `${quantity(finding.limits.voltage, 'V')} within ${quantity(finding.limits.afterS, 's')}`,
+          label: examplesCommissioning.limit,
+          value: examplesCommissioning.voltageWithinAfterS(finding.limits.voltage, finding.limits.afterS),
         },
-        { label: 'Its source', value: finding.limits.source },
-        { label: 'Still needed', value: finding.missing.join(' ') || '–' },
+        { label: examplesCommissioning.itsSource, value: finding.limits.source },
+        { label: examplesCommissioning.stillNeeded, value: finding.missing.join(' ') || '–' },
       ],
     };
   },
@@ -182,7 +229,7 @@ export const lowOutputExample: Example = {
     {
       kind: 'number',
       key: 'missing',
-      label: 'Missing in string A3',
+      label: examplesCommissioning.missingInStringA3,
       unit: '%',
       min: 0,
       max: 90,
@@ -191,7 +238,7 @@ export const lowOutputExample: Example = {
     {
       kind: 'number',
       key: 'days',
-      label: 'On how many of five days',
+      label: examplesCommissioning.onHowManyOf,
       min: 0,
       max: DAYS,
       whole: true,
@@ -200,10 +247,10 @@ export const lowOutputExample: Example = {
     {
       kind: 'choice',
       key: 'by',
-      label: 'What is missing',
+      label: examplesCommissioning.whatIsMissing,
       options: [
-        { value: 'voltage', label: 'voltage' },
-        { value: 'current', label: 'current' },
+        { value: 'voltage', label: examplesCommissioning.voltage },
+        { value: 'current', label: examplesCommissioning.current },
       ],
       start: 'voltage',
     },
@@ -219,16 +266,16 @@ export const lowOutputExample: Example = {
     return {
       finding: finding.words,
       figures: [
-        { label: 'Last day, over its siblings', value: percent(last?.ratio, 1) },
-        { label: 'Modified z of that day', value: number(last?.z, 1) },
-        { label: 'Threshold', value: finding.threshold.source },
+        { label: examplesCommissioning.lastDayOverIts, value: percent(last?.ratio, 1) },
+        { label: examplesCommissioning.modifiedZOfThat, value: number(last?.z, 1) },
+        { label: examplesCommissioning.threshold, value: finding.threshold.source },
         {
-          label: 'Lost over the days looked at',
+          label: examplesCommissioning.lostOverTheDays,
           value: finding.lossKWh
-            ? `${number(finding.lossKWh.value, 1)} kWh (${number(finding.lossKWh.low, 1)} to ${number(finding.lossKWh.high, 1)})`
+            ? examplesCommissioning.kWhTo(finding.lossKWh.value, finding.lossKWh.low, finding.lossKWh.high)
             : '–',
         },
-        { label: 'It could also be', value: finding.signature?.couldBe.join('; ') || '–' },
+        { label: examplesCommissioning.itCouldAlsoBe, value: finding.signature?.couldBe.join('; ') || '–' },
       ],
     };
   },

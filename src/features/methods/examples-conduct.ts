@@ -14,13 +14,14 @@ import { judgeFrame, sweepString } from '../../domain/verdicts/judge';
 import { newMemory } from '../../domain/verdicts/memory';
 import { number, percent, quantity } from '../../drawings/numbers';
 import type { Example } from './example';
+import { examplesConduct } from '../../words/method-examples';
 
 /** Any instant does: only differences count. Epoch seconds. */
 const START = 1_700_000_000;
 const RULE_SETS = [
   { value: 'rapid_shutdown_30s', label: '30 s' },
   { value: 'rapid_shutdown_10s', label: '10 s' },
-  { value: 'none', label: 'none' },
+  { value: 'none', label: examplesConduct.none },
 ] as const;
 
 function contextFor(
@@ -52,19 +53,19 @@ function contextFor(
 }
 
 const STATE_WORDS = {
-  unheard: 'not heard yet',
-  passing: 'passing',
-  shutdown: 'in shutdown',
-  silent: 'silent',
-  dark: 'dark',
+  unheard: examplesConduct.notHeardYet,
+  passing: examplesConduct.passing,
+  shutdown: examplesConduct.inShutdown,
+  silent: examplesConduct.silent,
+  dark: examplesConduct.dark,
 } as const;
 const VERDICT_WORDS = {
-  ok: 'as it should be',
-  stuck: 'stuck in shutdown',
-  not_shutting_down: 'not shutting down',
-  unconfirmed: 'unconfirmed',
-  late: 'late',
-  flapping: 'flapping',
+  ok: examplesConduct.asItShouldBe,
+  stuck: examplesConduct.stuckInShutdown,
+  not_shutting_down: examplesConduct.notShuttingDown,
+  unconfirmed: examplesConduct.unconfirmed,
+  late: examplesConduct.late,
+  flapping: examplesConduct.flapping,
 } as const;
 
 export const verdictExample: Example = {
@@ -72,24 +73,24 @@ export const verdictExample: Example = {
     {
       kind: 'choice',
       key: 'command',
-      label: 'Command',
+      label: examplesConduct.command,
       options: [
-        { value: 'initiator', label: 'shut down' },
-        { value: 'released', label: 'release' },
+        { value: 'initiator', label: examplesConduct.shutDown },
+        { value: 'released', label: examplesConduct.release },
       ],
       start: 'initiator',
     },
     {
       kind: 'choice',
       key: 'rules',
-      label: 'Time limit of the rule set',
+      label: examplesConduct.timeLimitOfThe,
       options: RULE_SETS,
       start: 'rapid_shutdown_30s',
     },
     {
       kind: 'number',
       key: 'interval',
-      label: 'Report interval',
+      label: examplesConduct.reportInterval,
       unit: 's',
       min: 5,
       max: 900,
@@ -99,18 +100,18 @@ export const verdictExample: Example = {
     {
       kind: 'choice',
       key: 'reports',
-      label: 'The unit then reports',
+      label: examplesConduct.theUnitThenReports,
       options: [
-        { value: 'passing', label: 'passing' },
-        { value: 'shutdown', label: 'shutdown' },
-        { value: 'nothing', label: 'nothing' },
+        { value: 'passing', label: examplesConduct.passing },
+        { value: 'shutdown', label: examplesConduct.shutdown },
+        { value: 'nothing', label: examplesConduct.nothing },
       ],
       start: 'passing',
     },
     {
       kind: 'number',
       key: 'after',
-      label: 'Looked at after',
+      label: examplesConduct.lookedAtAfter,
       unit: 's',
       min: 0,
       max: 7200,
@@ -136,11 +137,11 @@ export const verdictExample: Example = {
     const state = UNIT_STATES[memory.state[0] ?? -1];
     const verdict = VERDICTS[memory.verdict[0] ?? 0] ?? 'ok';
     return {
-      finding: `${verdict === 'ok' ? 'As it should be, so far' : `Verdict: ${VERDICT_WORDS[verdict]}`}. State: ${state ? STATE_WORDS[state] : 'nothing is known'}.`,
+      finding: examplesConduct.verdictAndState(verdict, VERDICT_WORDS[verdict], state && STATE_WORDS[state]),
       figures: [
-        { label: 'Time limit', value: quantity(context.times.timeLimitS, 's') },
-        { label: 'Where it comes from', value: context.timeLimitSource },
-        { label: 'Grace before stuck', value: quantity(context.times.graceS, 's') },
+        { label: examplesConduct.timeLimit, value: quantity(context.times.timeLimitS, 's') },
+        { label: examplesConduct.whereItComesFrom, value: context.timeLimitSource },
+        { label: examplesConduct.graceBeforeStuck, value: quantity(context.times.graceS, 's') },
       ],
     };
   },
@@ -151,18 +152,34 @@ export const conductorsExample: Example = {
     {
       kind: 'number',
       key: 'units',
-      label: 'Units, all claim shutdown',
+      label: examplesConduct.unitsAllClaimShutdown,
       min: 1,
       max: 63,
       whole: true,
       start: 14,
     },
-    { kind: 'number', key: 'volts', label: 'Voltage at the input', unit: 'V', min: 0, max: 1500, start: 96 },
-    { kind: 'number', key: 'strings', label: 'Strings on the input', min: 1, max: 6, whole: true, start: 1 },
+    {
+      kind: 'number',
+      key: 'volts',
+      label: examplesConduct.voltageAtTheInput,
+      unit: 'V',
+      min: 0,
+      max: 1500,
+      start: 96,
+    },
+    {
+      kind: 'number',
+      key: 'strings',
+      label: examplesConduct.stringsOnTheInput,
+      min: 1,
+      max: 6,
+      whole: true,
+      start: 1,
+    },
     {
       kind: 'number',
       key: 'module',
-      label: 'A passing module gives',
+      label: examplesConduct.aPassingModuleGives,
       unit: 'V',
       min: 5,
       max: 150,
@@ -190,27 +207,27 @@ export const conductorsExample: Example = {
     const nominal = context.behaviour.shutdownVoltage.nominal;
     if (!evidence)
       return {
-        finding: 'Nothing contradicts the claims. That is no proof: inverters read small voltages badly.',
-        figures: [{ label: 'All units in shutdown', value: quantity(units * nominal, 'V', 1) }],
+        finding: examplesConduct.nothingContradictsTheClaims,
+        figures: [{ label: examplesConduct.allUnitsInShutdown, value: quantity(units * nominal, 'V', 1) }],
       };
     return {
       finding:
         evidence.scope === 'string'
-          ? 'The conductors contradict the claims: the string is not shutting down, position unknown'
-          : 'The conductors contradict the claims: a string on this input is not shutting down, which one can not be told',
+          ? examplesConduct.theConductorsContradictThe
+          : examplesConduct.theConductorsContradictTheClaims,
       figures: [
-        { label: 'Expected', value: quantity(evidence.expectedV, 'V', 1) },
-        { label: 'Threshold', value: quantity(evidence.thresholdV, 'V', 1) },
-        { label: 'Its source', value: evidence.thresholdSource },
+        { label: examplesConduct.expected, value: quantity(evidence.expectedV, 'V', 1) },
+        { label: examplesConduct.threshold, value: quantity(evidence.thresholdV, 'V', 1) },
+        { label: examplesConduct.itsSource, value: evidence.thresholdSource },
         ...(evidence.unitsRange
           ? [
               {
-                label: 'Units that would explain it',
-                value: `${evidence.unitsRange[0]} to ${evidence.unitsRange[1]} of ${units}`,
+                label: examplesConduct.unitsThatWouldExplain,
+                value: examplesConduct.toOf(evidence.unitsRange[0], evidence.unitsRange[1], units),
               },
             ]
           : []),
-        { label: 'It could also be', value: evidence.couldBe.join('; ') },
+        { label: examplesConduct.itCouldAlsoBe, value: evidence.couldBe.join('; ') },
       ],
     };
   },
@@ -233,38 +250,41 @@ function siteWith(silentOfFirst: number, silentOfSecond: number): SiteCondition 
     name,
     kind: 'monitored',
     releasedBy: 'logger',
-    zone: 'Zone 1',
+    zone: examplesConduct.zone1,
     transmitters: [],
-    logger: 'Logger 1',
-    inverter: 'Inverter 1',
+    logger: examplesConduct.logger1,
+    inverter: examplesConduct.inverter1,
     input: name === 'A1' ? 1 : 2,
     slots: its,
     finding: null,
   });
   return {
-    name: 'Example',
+    name: examplesConduct.example,
     atS: START,
     reportIntervalS: 60,
     strings: [
       string(
         'A1',
-        slots('A1', silentOfFirst, () => 'Gateway 1'),
+        slots('A1', silentOfFirst, () => examplesConduct.gateway1),
       ),
       string(
         'A2',
-        slots('A2', silentOfSecond, (i) => (i < 6 ? 'Gateway 1' : 'Gateway 2')),
+        slots('A2', silentOfSecond, (i) => (i < 6 ? examplesConduct.gateway1 : examplesConduct.gateway2)),
       ),
     ],
-    zones: [{ name: 'Zone 1', inForce: 'released' }],
+    zones: [{ name: examplesConduct.zone1, inForce: 'released' }],
     transmitters: [],
     gateways: [
-      { name: 'Gateway 1', lastHeardS: START - (silentOfFirst === 12 && silentOfSecond >= 6 ? 900 : 20) },
-      { name: 'Gateway 2', lastHeardS: START - 20 },
+      {
+        name: examplesConduct.gateway1,
+        lastHeardS: START - (silentOfFirst === 12 && silentOfSecond >= 6 ? 900 : 20),
+      },
+      { name: examplesConduct.gateway2, lastHeardS: START - 20 },
     ],
-    loggers: [{ name: 'Logger 1', connected: true }],
+    loggers: [{ name: examplesConduct.logger1, connected: true }],
     inputs: [
-      { inverter: 'Inverter 1', number: 1, currentA: 8 },
-      { inverter: 'Inverter 1', number: 2, currentA: 8 },
+      { inverter: examplesConduct.inverter1, number: 1, currentA: 8 },
+      { inverter: examplesConduct.inverter1, number: 2, currentA: 8 },
     ],
   };
 }
@@ -274,7 +294,7 @@ export const causesExample: Example = {
     {
       kind: 'number',
       key: 'first',
-      label: 'Silent units of string A1, of 12',
+      label: examplesConduct.silentUnitsOfString,
       min: 0,
       max: 12,
       whole: true,
@@ -283,7 +303,7 @@ export const causesExample: Example = {
     {
       kind: 'number',
       key: 'second',
-      label: 'Silent units of string A2, of 12',
+      label: examplesConduct.silentUnitsOfStringA2,
       min: 0,
       max: 12,
       whole: true,
@@ -293,16 +313,16 @@ export const causesExample: Example = {
   answer: ({ number: n }) => {
     const causes = causesOf(siteWith(n('first'), n('second')));
     const [first] = causes;
-    if (!first) return { finding: 'Nothing is silent, so there is no cause to look for', figures: [] };
+    if (!first) return { finding: examplesConduct.nothingIsSilentSo, figures: [] };
     return {
       finding:
         causes.length === 1
           ? first.headline
-          : `${number(causes.length)} causes; the largest: ${first.headline}`,
+          : examplesConduct.causesTheLargest(causes.length, first.headline),
       figures: [
-        { label: 'Confidence', value: percent(first.confidence) },
-        { label: 'Evidence', value: first.evidence },
-        { label: 'It could also be', value: first.alternatives.join('; ') || '–' },
+        { label: examplesConduct.confidence, value: percent(first.confidence) },
+        { label: examplesConduct.evidence, value: first.evidence },
+        { label: examplesConduct.itCouldAlsoBe, value: first.alternatives.join('; ') || '–' },
       ],
     };
   },

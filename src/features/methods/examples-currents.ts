@@ -3,6 +3,7 @@ import { fitLoop, judgeLoop, type LoopSample } from '../../domain/output/resista
 import { UNITS_MIN, weakUnits, type WeakUnit } from '../../domain/output/weak-unit';
 import { number, percent, quantity } from '../../drawings/numbers';
 import type { Example } from './example';
+import { examplesCurrents } from '../../words/method-examples';
 
 const SAMPLES = 96;
 /** Current of a string through a day with clouds, A. */
@@ -12,10 +13,10 @@ const dayCurrent = (k: number): number =>
 const unrest = (k: number, phase: number): number => Math.sin(k * 2.399 + phase * 1.3);
 
 const OUTCOMES: Record<MembershipOutcome, string> = {
-  here: 'It sits where the drawing says',
-  elsewhere: 'It carries the current of another string',
-  cant_tell: 'Can’t tell',
-  fits_none: 'Its current fits no string',
+  here: examplesCurrents.itSitsWhereThe,
+  elsewhere: examplesCurrents.itCarriesTheCurrent,
+  cant_tell: examplesCurrents.cantTell,
+  fits_none: examplesCurrents.itsCurrentFitsNo,
 };
 
 export const membershipExample: Example = {
@@ -23,7 +24,7 @@ export const membershipExample: Example = {
     {
       kind: 'number',
       key: 'apart',
-      label: 'Strings differ in current by',
+      label: examplesCurrents.stringsDifferInCurrent,
       unit: '%',
       min: 0,
       max: 50,
@@ -32,7 +33,7 @@ export const membershipExample: Example = {
     {
       kind: 'number',
       key: 'accuracy',
-      label: 'Accuracy of the units',
+      label: examplesCurrents.accuracyOfTheUnits,
       unit: '%',
       min: 0.1,
       max: 10,
@@ -41,7 +42,7 @@ export const membershipExample: Example = {
     {
       kind: 'choice',
       key: 'wired',
-      label: 'Unit 1 of A1 is really wired into',
+      label: examplesCurrents.unit1OfA1,
       options: [
         { value: 'A2', label: 'A2' },
         { value: 'A1', label: 'A1' },
@@ -69,15 +70,15 @@ export const membershipExample: Example = {
       { name: 'A2', currents: Array.from({ length: 8 }, (_, i) => unit(other, i + 21)) },
     ];
     const judged = judgeMembership(strings, { accuracy }).find((m) => m.string === 'A1' && m.unit === 0);
-    if (!judged) throw new RangeError('the judgement left unit 1 of A1 out');
+    if (!judged) throw new RangeError(examplesCurrents.theJudgementLeftUnit);
     return {
       finding: judged.otherString
         ? `${OUTCOMES[judged.outcome]}: ${judged.otherString}`
         : OUTCOMES[judged.outcome],
       figures: [
-        { label: 'In words', value: judged.words },
-        { label: 'ln of the odds for that string', value: number(judged.logOdds, 1) },
-        { label: 'Can not be parted from', value: judged.undecidedWith.join(', ') || '–' },
+        { label: examplesCurrents.inWords, value: judged.words },
+        { label: examplesCurrents.lnOfTheOdds, value: number(judged.logOdds, 1) },
+        { label: examplesCurrents.canNotBeParted, value: judged.undecidedWith.join(', ') || '–' },
       ],
     };
   },
@@ -88,17 +89,25 @@ export const resistanceExample: Example = {
     {
       kind: 'number',
       key: 'now',
-      label: 'Resistance of the loop now',
+      label: examplesCurrents.resistanceOfTheLoop,
       unit: 'Ω',
       min: 0,
       max: 5,
       start: 0.65,
     },
-    { kind: 'number', key: 'past', label: 'When all was in order', unit: 'Ω', min: 0, max: 5, start: 0.4 },
+    {
+      kind: 'number',
+      key: 'past',
+      label: examplesCurrents.whenAllWasIn,
+      unit: 'Ω',
+      min: 0,
+      max: 5,
+      start: 0.4,
+    },
     {
       kind: 'number',
       key: 'gain',
-      label: 'Gain error of the input',
+      label: examplesCurrents.gainErrorOfThe,
       unit: '%',
       min: -1.5,
       max: 1.5,
@@ -128,17 +137,17 @@ export const resistanceExample: Example = {
       finding: finding.words,
       figures: [
         {
-          label: 'Fitted now, with 95 % interval',
+          label: examplesCurrents.fittedNowWith95,
           value: finding.fit
-            ? `${quantity(finding.fit.ohm, 'Ω', 2)} (${number(finding.fit.low, 2)} to ${number(finding.fit.high, 2)})`
+            ? examplesCurrents.ohmLowToHigh(finding.fit.ohm, finding.fit.low, finding.fit.high)
             : '–',
         },
         {
-          label: `More than ${finding.above?.comparedWith ?? 'before'}`,
+          label: examplesCurrents.moreThan(finding.above?.comparedWith),
           value: finding.above ? quantity(finding.above.ohm, 'Ω', 2) : '–',
         },
         {
-          label: 'Threshold',
+          label: examplesCurrents.threshold,
           value: `${quantity(finding.threshold.ohm, 'Ω', 2)}; ${finding.threshold.source}`,
         },
       ],
@@ -147,20 +156,28 @@ export const resistanceExample: Example = {
 };
 
 const KINDS: Record<WeakUnit['kind'], string> = {
-  held: 'passes nothing',
-  bypassed_substring: 'bypassed cells',
-  part_of_day: 'low for part of the day',
-  low: 'low all day',
+  held: examplesCurrents.passesNothing,
+  bypassed_substring: examplesCurrents.bypassedCells,
+  part_of_day: examplesCurrents.lowForPartOf,
+  low: examplesCurrents.lowAllDay,
 };
 const QUARTERS = 40;
 
 export const weakUnitExample: Example = {
   inputs: [
-    { kind: 'number', key: 'units', label: 'Units of the string', min: 1, max: 63, whole: true, start: 14 },
+    {
+      kind: 'number',
+      key: 'units',
+      label: examplesCurrents.unitsOfTheString,
+      min: 1,
+      max: 63,
+      whole: true,
+      start: 14,
+    },
     {
       kind: 'number',
       key: 'volts',
-      label: 'Unit 5 gives, where its neighbours give 34 V',
+      label: examplesCurrents.unit5GivesWhere,
       unit: 'V',
       min: -1,
       max: 34,
@@ -169,7 +186,7 @@ export const weakUnitExample: Example = {
     {
       kind: 'number',
       key: 'hours',
-      label: 'In so many of the day’s ten hours',
+      label: examplesCurrents.inSoManyOf,
       unit: 'h',
       min: 0,
       max: 10,
@@ -178,7 +195,7 @@ export const weakUnitExample: Example = {
     {
       kind: 'choice',
       key: 'groups',
-      label: 'Bypass diodes of a module',
+      label: examplesCurrents.bypassDiodesOfA,
       options: [
         { value: '3', label: '3' },
         { value: '2', label: '2' },
@@ -205,19 +222,17 @@ export const weakUnitExample: Example = {
     if (!weak)
       return {
         finding:
-          units < UNITS_MIN
-            ? `Can’t tell: ${UNITS_MIN} units are needed to say what is usual`
-            : 'No unit of the string stands out',
+          units < UNITS_MIN ? examplesCurrents.cantTellUnitsAre(UNITS_MIN) : examplesCurrents.noUnitOfThe,
         figures: [],
       };
     return {
       finding: weak.words,
       figures: [
-        { label: 'What it looks like', value: KINDS[weak.kind] },
-        { label: 'Its voltage over its neighbours’', value: percent(weak.ratio, 1) },
-        { label: 'In that share of the quarters', value: percent(weak.share) },
-        { label: 'Low below', value: percent(weak.threshold.ratio, 1) },
-        { label: 'It could also be', value: weak.couldBe.join('; ') },
+        { label: examplesCurrents.whatItLooksLike, value: KINDS[weak.kind] },
+        { label: examplesCurrents.itsVoltageOverIts, value: percent(weak.ratio, 1) },
+        { label: examplesCurrents.inThatShareOf, value: percent(weak.share) },
+        { label: examplesCurrents.lowBelow, value: percent(weak.threshold.ratio, 1) },
+        { label: examplesCurrents.itCouldAlsoBe, value: weak.couldBe.join('; ') },
       ],
     };
   },

@@ -7,10 +7,11 @@ import { interpretReading } from '../../domain/readings/interpret';
 import { ORDINARY_METER } from '../../domain/readings/reading';
 import { number, percent, quantity } from '../../drawings/numbers';
 import type { Example } from './example';
+import { examplesElectrical } from '../../words/method-examples';
 
 /** A typical module of no maker in particular. */
 export const MODULE: ModuleType = {
-  name: 'typical, 108 half cells',
+  name: examplesElectrical.typical108HalfCells,
   vocRef: 37.3,
   iscRef: 13.9,
   vmpRef: 31.2,
@@ -24,27 +25,43 @@ export const MODULE: ModuleType = {
 };
 
 const span = (from: number, to: number, digits = 0): string =>
-  `${number(from, digits)} to ${quantity(to, 'V', digits)}`;
+  examplesElectrical.fromToDigits(from, digits, to);
 
 export const readingExample: Example = {
   inputs: [
     {
       kind: 'choice',
       key: 'kind',
-      label: 'Kind of unit',
+      label: examplesElectrical.kindOfUnit,
       options: [
-        { value: 'shutdown_only', label: 'shutdown-only' },
-        { value: 'monitored', label: 'monitored' },
-        { value: 'optimizing', label: 'optimizing' },
+        { value: 'shutdown_only', label: examplesElectrical.shutdownOnly },
+        { value: 'monitored', label: examplesElectrical.monitored },
+        { value: 'optimizing', label: examplesElectrical.optimizing },
       ],
       start: 'shutdown_only',
     },
-    { kind: 'number', key: 'units', label: 'Units', min: 1, max: 63, whole: true, start: 14 },
-    { kind: 'number', key: 'volts', label: 'Reading', unit: 'V', min: -2000, max: 2000, start: 7.8 },
+    {
+      kind: 'number',
+      key: 'units',
+      label: examplesElectrical.units,
+      min: 1,
+      max: 63,
+      whole: true,
+      start: 14,
+    },
+    {
+      kind: 'number',
+      key: 'volts',
+      label: examplesElectrical.reading,
+      unit: 'V',
+      min: -2000,
+      max: 2000,
+      start: 7.8,
+    },
     {
       kind: 'number',
       key: 'sibling',
-      label: 'A like string reads',
+      label: examplesElectrical.aLikeStringReads,
       unit: 'V',
       min: -2000,
       max: 2000,
@@ -79,16 +96,40 @@ export const readingExample: Example = {
 
 export const expectedExample: Example = {
   inputs: [
-    { kind: 'number', key: 'units', label: 'Passing units', min: 1, max: 63, whole: true, start: 14 },
-    { kind: 'number', key: 'poa', label: 'Light on the plane', unit: 'W/m²', min: 30, max: 1500, start: 650 },
-    { kind: 'number', key: 'cell', label: 'Cell temperature', unit: '°C', min: -40, max: 100, start: 38 },
+    {
+      kind: 'number',
+      key: 'units',
+      label: examplesElectrical.passingUnits,
+      min: 1,
+      max: 63,
+      whole: true,
+      start: 14,
+    },
+    {
+      kind: 'number',
+      key: 'poa',
+      label: examplesElectrical.lightOnThePlane,
+      unit: 'W/m²',
+      min: 30,
+      max: 1500,
+      start: 650,
+    },
+    {
+      kind: 'number',
+      key: 'cell',
+      label: examplesElectrical.cellTemperature,
+      unit: '°C',
+      min: -40,
+      max: 100,
+      start: 38,
+    },
     {
       kind: 'choice',
       key: 'load',
-      label: 'String current',
+      label: examplesElectrical.stringCurrent,
       options: [
-        { value: 'open', label: 'open circuit' },
-        { value: 'load', label: 'under load' },
+        { value: 'open', label: examplesElectrical.openCircuit },
+        { value: 'load', label: examplesElectrical.underLoad },
       ],
       start: 'open',
     },
@@ -105,19 +146,19 @@ export const expectedExample: Example = {
       temperatureCellMeasured: n('cell'),
       temperatureAir: null,
     });
-    if (!expected) return { finding: 'Too little light to foretell a voltage.', figures: [] };
+    if (!expected) return { finding: examplesElectrical.tooLittleLightTo, figures: [] };
     const [low, high] = expectedBand(expected, units);
     const nominal = UNIT_PRESETS.monitored.shutdownVoltage.nominal;
     return {
-      finding: `${number(units)} passing units should give ${span(low, high)}, nine times in ten`,
+      finding: examplesElectrical.passingUnitsShouldGive(units, span(low, high)),
       figures: [
         {
-          label: 'One module open circuit, by its datasheet',
+          label: examplesElectrical.oneModuleOpenCircuit,
           value: quantity(vocOf(MODULE, n('poa'), n('cell')), 'V', 2),
         },
-        { label: 'One passing unit', value: quantity(expected.voltage, 'V', 2) },
-        { label: 'Relative standard deviation of the string', value: percent(expected.relativeSd, 1) },
-        { label: 'All of them in shutdown, open circuit', value: quantity(units * nominal, 'V', 1) },
+        { label: examplesElectrical.onePassingUnit, value: quantity(expected.voltage, 'V', 2) },
+        { label: examplesElectrical.relativeStandardDeviationOf, value: percent(expected.relativeSd, 1) },
+        { label: examplesElectrical.allOfThemIn, value: quantity(units * nominal, 'V', 1) },
       ],
     };
   },
@@ -125,11 +166,19 @@ export const expectedExample: Example = {
 
 export const yieldsExample: Example = {
   inputs: [
-    { kind: 'number', key: 'p0', label: 'Rated power', unit: 'kW', min: 0.1, max: 10_000, start: 40 },
+    {
+      kind: 'number',
+      key: 'p0',
+      label: examplesElectrical.ratedPower,
+      unit: 'kW',
+      min: 0.1,
+      max: 10_000,
+      start: 40,
+    },
     {
       kind: 'number',
       key: 'energy',
-      label: 'AC energy of the hour',
+      label: examplesElectrical.acEnergyOfThe,
       unit: 'kWh',
       min: 0,
       max: 20_000,
@@ -138,13 +187,21 @@ export const yieldsExample: Example = {
     {
       kind: 'number',
       key: 'poa',
-      label: 'Mean light in the plane',
+      label: examplesElectrical.meanLightInThe,
       unit: 'W/m²',
       min: 0,
       max: 1500,
       start: 760,
     },
-    { kind: 'number', key: 'module', label: 'Module temperature', unit: '°C', min: -40, max: 100, start: 47 },
+    {
+      kind: 'number',
+      key: 'module',
+      label: examplesElectrical.moduleTemperature,
+      unit: '°C',
+      min: -40,
+      max: 100,
+      start: 47,
+    },
   ],
   answer: ({ number: n }) => {
     const y = yields(
@@ -154,13 +211,13 @@ export const yieldsExample: Example = {
     return {
       finding:
         y.performanceRatio === null
-          ? 'Without light there is no ratio'
-          : `Performance ratio ${percent(y.performanceRatio, 1)}`,
+          ? examplesElectrical.withoutLightThereIs
+          : examplesElectrical.performanceRatio(y.performanceRatio),
       figures: [
-        { label: 'Final yield Yf', value: quantity(y.finalYieldH, 'h', 3) },
-        { label: 'Reference yield Yr', value: quantity(y.referenceYieldH, 'h', 3) },
-        { label: 'Ratio corrected to 25 °C', value: percent(y.performanceRatioStc, 1) },
-        { label: 'Completeness', value: percent(y.completeness) },
+        { label: examplesElectrical.finalYieldYf, value: quantity(y.finalYieldH, 'h', 3) },
+        { label: examplesElectrical.referenceYieldYr, value: quantity(y.referenceYieldH, 'h', 3) },
+        { label: examplesElectrical.ratioCorrectedTo25, value: percent(y.performanceRatioStc, 1) },
+        { label: examplesElectrical.completeness, value: percent(y.completeness) },
       ],
     };
   },

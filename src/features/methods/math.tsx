@@ -1,4 +1,5 @@
 import { createElement, type ReactNode } from 'react';
+import { methodsMath } from '../../words/methods';
 
 /** Formulas as MathML: set by the browser, read by screen readers. */
 
@@ -24,7 +25,7 @@ export function Formula({ label, children }: { label: string; children: ReactNod
   return (
     <div
       role="group"
-      aria-label={`Formula: ${label}`}
+      aria-label={methodsMath.formulaLabel(label)}
       tabIndex={0}
       className="overflow-x-auto py-1.5 text-[17px] leading-7"
     >

@@ -12,9 +12,9 @@ import {
 } from '../../domain/verdicts/conductors';
 import { judgementTimes, timeLimitOf } from '../../domain/verdicts/context';
 import { SILENT_AFTER_INTERVALS } from '../../domain/verdicts/judge';
-import { percent } from '../../drawings/numbers';
 import { brackets, frac, n, op, row, sub, sum, v, word } from './math';
 import type { Note } from './note';
+import { notesConduct } from '../../words/methods';
 
 /** Notes on what is concluded from one moment: readings, claims, conductors, causes, the expected voltage. */
 
@@ -25,18 +25,11 @@ const { nominal, min, max } = UNIT_PRESETS.shutdown_only.shutdownVoltage;
 export const CONDUCT_NOTES: readonly Note[] = [
   {
     key: 'reading',
-    title: 'What a meter reading means',
-    computes: (
-      <>
-        Every way in which the string can be (all in shutdown, some passing, a module not mated, reversed, an
-        open lead and more) foretells a voltage and its uncertainty. The reading weighs them by Bayes. From a
-        chance of {percent(TELL_FROM)} on an explanation is named as the finding; below that we say
-        &ldquo;can&rsquo;t tell&rdquo; and show what fits.
-      </>
-    ),
+    title: notesConduct.whatAMeterReading,
+    computes: <>{notesConduct.everyWayInWhich(TELL_FROM)}</>,
     formulas: [
       {
-        label: 'chance of an explanation',
+        label: notesConduct.chanceOfAnExplanation,
         set: row(
           v('P'),
           brackets(v('h'), op('|'), v('U')),
@@ -57,7 +50,7 @@ export const CONDUCT_NOTES: readonly Note[] = [
         ),
       },
       {
-        label: 'voltage that an explanation foretells',
+        label: notesConduct.voltageThatAnExplanation,
         set: row(
           sub(v('μ'), v('h')),
           op('='),
@@ -69,32 +62,26 @@ export const CONDUCT_NOTES: readonly Note[] = [
         ),
       },
     ],
-    where: `p units pass their module's open-circuit voltage, s are in shutdown at ${nominal} V (${min} to ${max} V by the preset). A string that is as it should be starts at ${percent(PRIORS.asExpected)}.`,
+    where: notesConduct.unitsPassTheirModules(nominal, min, max, PRIORS.asExpected),
     sources: [
-      `${nominal} V a unit in shutdown: common practice. Its spread and all starting chances: from experience.`,
-      'Open-circuit voltage from the datasheet (see the expected voltage below).',
-      'Tolerance of the sheet ±3 %: as sheets state by IEC 61215.',
+      notesConduct.unitInShutdownCommon(nominal),
+      notesConduct.openCircuitVoltageFrom,
+      notesConduct.toleranceOfTheSheet,
     ],
     limits: [
-      'One reading of a string in shutdown often fits two explanations: one unit is worth little more than the tolerance of all.',
-      'The type of unit, the count and what is commanded are taken as entered.',
-      'At night and under snow a low reading proves nothing.',
-      'Readings to earth that add up to the string’s are a fault; its place is told only where all modules give like voltages.',
+      notesConduct.oneReadingOfA,
+      notesConduct.theTypeOfUnit,
+      notesConduct.atNightAndUnder,
+      notesConduct.readingsToEarthThat,
     ],
   },
   {
     key: 'verdict',
-    title: 'State and verdict of a unit',
-    computes: (
-      <>
-        The state (passing, in shutdown, silent, dark, not heard) is the unit&rsquo;s own claim unless a
-        voltage measured on its conductors contradicts it. The verdict holds it against what is commanded:
-        stuck, not shutting down, late, flapping, or unconfirmed where nothing shows what it did.
-      </>
-    ),
+    title: notesConduct.stateAndVerdictOf,
+    computes: <>{notesConduct.theStatePassingIn}</>,
     formulas: [
       {
-        label: 'not shutting down',
+        label: notesConduct.notShuttingDown,
         set: row(
           sub(v('t'), word('passing')),
           op('>'),
@@ -104,9 +91,9 @@ export const CONDUCT_NOTES: readonly Note[] = [
         ),
       },
       {
-        label: 'stuck',
+        label: notesConduct.stuck,
         set: row(
-          sub(v('t'), word('in shutdown')),
+          sub(v('t'), word(notesConduct.inShutdown)),
           op('≥'),
           word('max'),
           brackets(
@@ -123,7 +110,7 @@ export const CONDUCT_NOTES: readonly Note[] = [
         ),
       },
       {
-        label: 'silent',
+        label: notesConduct.silent,
         set: row(
           v('t'),
           op('−'),
@@ -134,31 +121,29 @@ export const CONDUCT_NOTES: readonly Note[] = [
         ),
       },
     ],
-    where: `With reports every 60 s the grace is ${MINUTELY.graceS} s. ${MINUTELY.flapChanges} changes within ${MINUTELY.flapWindowS / 60} min that no command explains are flapping.`,
+    where: notesConduct.withReportsEveryThe(MINUTELY.graceS, MINUTELY.flapChanges, MINUTELY.flapWindowS),
     sources: [
-      `Time limit ${timeLimitS} s: ${timeLimitOf('rapid_shutdown_30s').source}. ${timeLimitOf('rapid_shutdown_10s').timeLimitS} s: ${timeLimitOf('rapid_shutdown_10s').source}.`,
-      'Grace, silence and flapping: settings, from experience.',
+      notesConduct.timeLimit(
+        timeLimitS,
+        timeLimitOf('rapid_shutdown_30s').source,
+        timeLimitOf('rapid_shutdown_10s').timeLimitS,
+        timeLimitOf('rapid_shutdown_10s').source,
+      ),
+      notesConduct.graceSilenceAndFlapping,
     ],
     limits: [
-      'A claim is only a claim: an output inferred from it is drawn dashed and called assumed.',
-      'Reports come at intervals, so the time to shutdown is an interval too.',
-      'While shutdown is commanded, a unit that says nothing is never taken to be in order.',
+      notesConduct.aClaimIsOnly,
+      notesConduct.reportsComeAtIntervals,
+      notesConduct.whileShutdownIsCommanded,
     ],
   },
   {
     key: 'conductors',
-    title: 'What the conductors say against the claims',
-    computes: (
-      <>
-        The voltage of an inverter input is held against what the units of its strings claim. If it stays up
-        though all claim shutdown, the string is not shutting down, position unknown.{' '}
-        {AGREEING.not_shutting_down} readings must agree. While released, the units&rsquo; outputs must add up
-        to the input; where units tell nothing, the missing voltage says how many are held.
-      </>
-    ),
+    title: notesConduct.whatTheConductorsSay,
+    computes: <>{notesConduct.theVoltageOfAn(AGREEING.not_shutting_down)}</>,
     formulas: [
       {
-        label: 'threshold on the home run',
+        label: notesConduct.thresholdOnTheHome,
         set: row(
           sub(v('U'), word('max')),
           op('='),
@@ -167,7 +152,7 @@ export const CONDUCT_NOTES: readonly Note[] = [
         ),
       },
       {
-        label: 'outputs against the input, released',
+        label: notesConduct.outputsAgainstTheInput,
         set: row(
           op('|'),
           sum(v('i')),
@@ -181,7 +166,7 @@ export const CONDUCT_NOTES: readonly Note[] = [
         ),
       },
       {
-        label: 'held units of a silent string',
+        label: notesConduct.heldUnitsOfA,
         set: row(
           v('k'),
           op('='),
@@ -192,68 +177,47 @@ export const CONDUCT_NOTES: readonly Note[] = [
         ),
       },
     ],
-    where: `Held units are counted where they miss six tenths of a module or ${STEADY_DEVIATIONS} standard deviations for ${STEADY_S / 3600} h, for a shadow moves on. Inputs of one inverter are taken to differ by ${percent(INPUTS_DIFFER, 1)} a module.`,
-    sources: [
-      `${OUTSIDE_ARRAY_LIMIT_V} V outside the array boundary: NEC 690.12(B)(1).`,
-      'Twice the units’ highest shutdown voltage: our own rule.',
-    ],
+    where: notesConduct.heldUnitsAreCounted(STEADY_DEVIATIONS, STEADY_S, INPUTS_DIFFER),
+    sources: [notesConduct.outsideTheArrayBoundary(OUTSIDE_ARRAY_LIMIT_V), notesConduct.twiceTheUnitsHighest],
     limits: [
-      `An inverter's capacitors hold the home run up: nothing is said for ${MINUTELY.capacitorHoldS} s after the limit.`,
-      'Strings that share an input share its voltage: which of them it is can not be told, and a held unit in one of silent strings shows as current only.',
-      'Units that measure their module only: their outputs are what they claim. One of more than about fourteen is within the input’s own accuracy.',
-      'A shadow that stays two hours on as many modules reads like held units. Without other strings on the inverter one held unit of many is within what a datasheet foretells.',
-      'Inverters read a few volts badly. A low figure is no witness of a shutdown.',
+      notesConduct.anInvertersCapacitorsHold(MINUTELY.capacitorHoldS),
+      notesConduct.stringsThatShareAn,
+      notesConduct.unitsThatMeasureTheir,
+      notesConduct.aShadowThatStays,
+      notesConduct.invertersReadAFew,
     ],
   },
   {
     key: 'causes',
-    title: 'Causes',
-    computes: (
-      <>
-        The smallest set of shared parts (gateway, transmitter, string, inverter input, logger, zone) that
-        explains the abnormal units. What a rival explains as well is kept beside it.
-      </>
-    ),
+    title: notesConduct.causes,
+    computes: <>{notesConduct.theSmallestSetOf}</>,
     formulas: [
       {
-        label: 'gain of an explanation',
+        label: notesConduct.gainOfAnExplanation,
         set: row(
           v('G'),
           op('='),
-          sum(word('show it')),
+          sum(word(notesConduct.showIt)),
           brackets(sub(v('c'), word('alone')), op('−'), sub(v('c'), word('shows'))),
           op('−'),
-          sum(word('do not')),
+          sum(word(notesConduct.doNot)),
           sub(v('c'), word('spares')),
           op('−'),
           sub(v('c'), word('part')),
         ),
       },
     ],
-    where:
-      'c are costs, −ln of a probability. The part with the greatest gain is taken first, then the rest again.',
-    sources: [
-      'Greedy cover: V. Chvátal, 1979.',
-      'Costs of failures: from experience. They rank explanations and are no statistics.',
-    ],
-    limits: [
-      'Inferred from afar: only a look at the part decides.',
-      'Parts that the as-built does not name can not be found.',
-    ],
+    where: notesConduct.cAreCostsLn,
+    sources: [notesConduct.greedyCoverVChvtal, notesConduct.costsOfFailuresFrom],
+    limits: [notesConduct.inferredFromAfarOnly, notesConduct.partsThatTheAs],
   },
   {
     key: 'expected',
-    title: 'The expected voltage',
-    computes: (
-      <>
-        What a passing unit should give now, from the most direct source there is: like strings of the plane,
-        the string&rsquo;s own passing units, the datasheet under measured light, the datasheet under a clear
-        sky.
-      </>
-    ),
+    title: notesConduct.theExpectedVoltage,
+    computes: <>{notesConduct.whatAPassingUnit}</>,
     formulas: [
       {
-        label: 'open-circuit voltage from a datasheet',
+        label: notesConduct.openCircuitVoltageFromA,
         set: row(
           sub(v('U'), word('oc')),
           op('='),
@@ -267,13 +231,7 @@ export const CONDUCT_NOTES: readonly Note[] = [
         ),
       },
     ],
-    sources: [
-      'Logarithm of the light: the diode equation. Cell temperature without a sensor: NOCT.',
-      `Spread from at least ${SIBLINGS_FOR_SPREAD} siblings: 1.4826 × MAD (Iglewicz & Hoaglin 1993). Otherwise fixed and wide, from experience.`,
-    ],
-    limits: [
-      'Shade on a module is not foreseen.',
-      'Under load the datasheet’s ratio of working to open-circuit voltage is taken as constant.',
-    ],
+    sources: [notesConduct.logarithmOfTheLight, notesConduct.spreadFromAtLeast(SIBLINGS_FOR_SPREAD)],
+    limits: [notesConduct.shadeOnAModule, notesConduct.underLoadTheDatasheets],
   },
 ];

@@ -11,7 +11,6 @@ import { Table, type Column } from '../../components/ui/Table';
 import { Tag } from '../../components/ui/Tag';
 import { RelativeTime } from '../../components/ui/Time';
 import { ROLES, type Role } from '../../domain/access/permissions';
-import { counted } from '../../drawings/numbers';
 import { api, withQuery, type ApiError } from '../../lib/api';
 import { queryClient } from '../../lib/query-client';
 import { useViewInUrl } from '../../lib/view-in-url';
@@ -20,6 +19,7 @@ import type { InvitationItem, PeoplePage, PeopleView, PersonItem } from '../../s
 import { listedPeople, PEOPLE_DEFAULTS, peopleFinding, pending } from './list';
 import { PersonForm, type PersonDraft } from './PersonForm';
 import { PersonTokens } from './PersonTokens';
+import { peopleWords } from '../../words/people';
 
 const KEY = ['people'];
 const SHORT_ROLE: Record<Role, string> = {
@@ -81,13 +81,13 @@ export function People({ initial, view: initialView, timeZone }: Props) {
   const columns: Column<PersonItem>[] = [
     {
       key: 'name',
-      label: 'Name',
+      label: peopleWords.name,
       sortable: true,
       cell: (p) => (
         <>
           <span className="block font-medium">
             {p.name}
-            {p.self && <span className="text-ink-2"> (you)</span>}
+            {p.self && <span className="text-ink-2">{peopleWords.you}</span>}
           </span>
           <span className="block text-sm text-ink-2 [overflow-wrap:anywhere]">
             {p.email.slice(0, p.email.lastIndexOf('@') + 1)}
@@ -99,25 +99,25 @@ export function People({ initial, view: initialView, timeZone }: Props) {
     },
     {
       key: 'role',
-      label: 'Role',
+      label: peopleWords.role,
       cell: (p) => (
         <>
           {SHORT_ROLE[p.role]}
           {p.role === 'customer' && (
-            <span className="block text-sm text-ink-2">{counted(p.sites.length, 'site')}</span>
+            <span className="block text-sm text-ink-2">{peopleWords.countedSitesSite(p.sites.length)}</span>
           )}
         </>
       ),
     },
     {
       key: 'factor',
-      label: 'Second factor',
+      label: peopleWords.secondFactor,
       from: 'md',
       cell: (p) => (p.secondFactor ? 'yes' : 'no'),
     },
     {
       key: 'tokens',
-      label: 'Tokens',
+      label: peopleWords.tokens,
       from: 'md',
       cell: (p) =>
         p.tokens === 0 ? (
@@ -128,10 +128,11 @@ export function People({ initial, view: initialView, timeZone }: Props) {
             <span className="block text-sm text-ink-2">
               {p.tokensUsedAt ? (
                 <>
-                  used <RelativeTime at={p.tokensUsedAt} now={page.at} timeZone={timeZone} />
+                  {peopleWords.used}
+                  <RelativeTime at={p.tokensUsedAt} now={page.at} timeZone={timeZone} />
                 </>
               ) : (
-                'not used yet'
+                peopleWords.notUsedYet
               )}
             </span>
           </>
@@ -139,12 +140,12 @@ export function People({ initial, view: initialView, timeZone }: Props) {
     },
     {
       key: 'seen',
-      label: 'Last seen',
+      label: peopleWords.lastSeen,
       sortable: true,
       from: 'sm',
       cell: (p) =>
         !p.active ? (
-          <Tag tone="slate">cannot sign in</Tag>
+          <Tag tone="slate">{peopleWords.cannotSignIn}</Tag>
         ) : p.lastSeenAt ? (
           <RelativeTime at={p.lastSeenAt} now={page.at} timeZone={timeZone} />
         ) : (
@@ -153,11 +154,11 @@ export function People({ initial, view: initialView, timeZone }: Props) {
     },
     {
       key: 'do',
-      label: 'Change',
+      label: peopleWords.change,
       numeric: true,
       cell: (p) => (
         <span className="flex flex-wrap justify-end gap-2">
-          <Button onClick={() => begin({ kind: 'change', person: p })}>Change</Button>
+          <Button onClick={() => begin({ kind: 'change', person: p })}>{peopleWords.change}</Button>
           {!p.self && (
             <Button
               onClick={() =>
@@ -167,11 +168,11 @@ export function People({ initial, view: initialView, timeZone }: Props) {
                       path: paths.api.person(p.id),
                       method: 'PATCH',
                       body: { active: true },
-                      said: `${p.name} can sign in again.`,
+                      said: peopleWords.canSignInAgain(p.name),
                     })
               }
             >
-              {p.active ? 'Deactivate' : 'Let in again'}
+              {p.active ? peopleWords.deactivate : peopleWords.letInAgain}
             </Button>
           )}
         </span>
@@ -186,7 +187,7 @@ export function People({ initial, view: initialView, timeZone }: Props) {
         sentence={words.sentence}
         actions={
           <Button weight="primary" onClick={() => begin({ kind: 'invite', draft: NOBODY })}>
-            Invite somebody
+            {peopleWords.inviteSomebody}
           </Button>
         }
       />
@@ -211,34 +212,37 @@ export function People({ initial, view: initialView, timeZone }: Props) {
           send.mutate({
             path: paths.api.invitation(i.id),
             method: 'DELETE',
-            said: `The invitation of ${i.name} has ended.`,
+            said: peopleWords.theInvitationOfHas(i.name),
           })
         }
       />
-      <Sheet id="people" title="People" flush>
+      <Sheet id="people" title={peopleWords.people} flush>
         <form
           className="no-print mb-3 flex flex-wrap items-center gap-x-4 gap-y-2"
           onSubmit={(event) => event.preventDefault()}
         >
           <SearchInput
-            label="Filter by name or address"
+            label={peopleWords.filterByNameOr}
             value={view.q}
             onChange={(typed) => setView({ q: typed }, 'typed')}
             className="sm:w-[240px]"
           />
           <Segmented
-            label="Role"
+            label={peopleWords.role}
             options={
-              [{ value: 'all', label: 'All' }, ...ROLES.map((r) => ({ value: r, label: `${r}s` }))] as const
+              [
+                { value: 'all', label: peopleWords.all },
+                ...ROLES.map((r) => ({ value: r, label: `${r}s` })),
+              ] as const
             }
             value={view.role}
             onChange={(role) => setView({ role })}
           />
           <Segmented
-            label="Which people"
+            label={peopleWords.whichPeople}
             options={[
-              { value: 'active', label: 'Can sign in' },
-              { value: 'all', label: 'Everybody' },
+              { value: 'active', label: peopleWords.canSignIn },
+              { value: 'all', label: peopleWords.everybody },
             ]}
             value={view.show}
             onChange={(show) => setView({ show })}
@@ -248,34 +252,32 @@ export function People({ initial, view: initialView, timeZone }: Props) {
           </ButtonLink>
         </form>
         <Table
-          caption="People of the organisation"
+          caption={peopleWords.peopleOfTheOrganisation}
           columns={columns}
           rows={shown}
           rowKey={(p) => p.id}
           sorting={{ key: view.sort, descending: view.sort === 'seen' }}
           onSort={({ key }) => setView({ sort: key === 'seen' ? 'seen' : 'name' })}
-          empty={<Notice kind="empty" title="Nobody fits these filters" />}
+          empty={<Notice kind="empty" title={peopleWords.nobodyFitsTheseFilters} />}
         />
       </Sheet>
 
-      <Dialog open={open?.kind === 'invite'} title="Invite somebody" onClose={() => setOpen(null)}>
+      <Dialog open={open?.kind === 'invite'} title={peopleWords.inviteSomebody} onClose={() => setOpen(null)}>
         {open?.kind === 'invite' && (
           <>
-            <p className="mb-4 text-ink-2">
-              A letter with a link goes to this address. The link works once, for a week.
-            </p>
+            <p className="mb-4 text-ink-2">{peopleWords.aLetterWithA}</p>
             <PersonForm
               draft={open.draft}
               sites={page.sites}
               fault={send.error}
               busy={send.isPending}
-              submit="Send the invitation"
+              submit={peopleWords.sendTheInvitation}
               onSubmit={(draft) =>
                 send.mutate({
                   path: paths.api.invitations(),
                   method: 'POST',
                   body: { ...draft, sites: draft.role === 'customer' ? draft.sites : [] },
-                  said: `An invitation is on its way to ${draft.email}.`,
+                  said: peopleWords.anInvitationIsOn(draft.email),
                 })
               }
             />
@@ -284,7 +286,7 @@ export function People({ initial, view: initialView, timeZone }: Props) {
       </Dialog>
       <Dialog
         open={open?.kind === 'change'}
-        title={open?.kind === 'change' ? `Change ${open.person.name}` : ''}
+        title={open?.kind === 'change' ? peopleWords.changePerson(open.person.name) : ''}
         onClose={() => setOpen(null)}
       >
         {open?.kind === 'change' && (
@@ -296,13 +298,13 @@ export function People({ initial, view: initialView, timeZone }: Props) {
               fixedRole={open.person.self}
               fault={send.error}
               busy={send.isPending}
-              submit="Save"
+              submit={peopleWords.save}
               onSubmit={({ name, role, sites }) =>
                 send.mutate({
                   path: paths.api.person(open.person.id),
                   method: 'PATCH',
                   body: { name, role, ...(role === 'customer' ? { sites } : {}) },
-                  said: `${name} was changed.${role === open.person.role ? '' : ' The new role holds from the next sign-in.'}`,
+                  said: peopleWords.wasChanged(name, role, open.person.role),
                 })
               }
             />
@@ -313,7 +315,7 @@ export function People({ initial, view: initialView, timeZone }: Props) {
                 send.mutate({
                   path: paths.api.personTokens(open.person.id),
                   method: 'DELETE',
-                  said: `The tokens of ${open.person.name} have ended.`,
+                  said: peopleWords.theTokensOfHave(open.person.name),
                 })
               }
             />
@@ -322,15 +324,12 @@ export function People({ initial, view: initialView, timeZone }: Props) {
       </Dialog>
       <Dialog
         open={open?.kind === 'deactivate'}
-        title={open?.kind === 'deactivate' ? `Deactivate ${open.person.name}?` : ''}
+        title={open?.kind === 'deactivate' ? peopleWords.deactivatePerson(open.person.name) : ''}
         onClose={() => setOpen(null)}
       >
         {open?.kind === 'deactivate' && (
           <>
-            <p>
-              {open.person.name} is signed out everywhere at once and can’t sign in. What {open.person.name}{' '}
-              has recorded stays, under the same name.
-            </p>
+            <p>{peopleWords.isSignedOutEverywhere(open.person.name)}</p>
             {send.error && (
               <p role="alert" className="mt-3 font-medium text-rust-ink">
                 {send.error.message}
@@ -345,13 +344,13 @@ export function People({ initial, view: initialView, timeZone }: Props) {
                     path: paths.api.person(open.person.id),
                     method: 'PATCH',
                     body: { active: false },
-                    said: `${open.person.name} can no longer sign in.`,
+                    said: peopleWords.canNoLongerSign(open.person.name),
                   })
                 }
               >
-                Deactivate
+                {peopleWords.deactivate}
               </Button>
-              <Button onClick={() => setOpen(null)}>Leave it</Button>
+              <Button onClick={() => setOpen(null)}>{peopleWords.leaveIt}</Button>
             </div>
           </>
         )}
@@ -374,7 +373,7 @@ function Invitations({
   const shown = pending(page.invitations);
   if (shown.length === 0) return null;
   return (
-    <Sheet id="invitations" title="Invited" className="mb-5">
+    <Sheet id="invitations" title={peopleWords.invited} className="mb-5">
       <ul className="divide-y divide-rule-faint">
         {shown.map((i) => (
           <li key={i.id} className="flex flex-wrap items-center justify-between gap-x-4 gap-y-2 py-2.5">
@@ -383,14 +382,14 @@ function Invitations({
                 {i.name}, {SHORT_ROLE[i.role]}
               </p>
               <p className="break-all text-sm text-ink-2">
-                {i.email} · by {i.invitedBy},{' '}
+                {peopleWords.emailByInvitedBy(i.email, i.invitedBy)}
                 <RelativeTime at={i.createdAt} now={page.at} timeZone={timeZone} />
               </p>
             </div>
             <span className="flex items-center gap-2">
-              {i.state === 'expired' && <Tag tone="outline">ran out</Tag>}
-              <Button onClick={() => onAgain(i)}>Invite again</Button>
-              {i.state === 'open' && <Button onClick={() => onEnd(i)}>End it</Button>}
+              {i.state === 'expired' && <Tag tone="outline">{peopleWords.ranOut}</Tag>}
+              <Button onClick={() => onAgain(i)}>{peopleWords.inviteAgain}</Button>
+              {i.state === 'open' && <Button onClick={() => onEnd(i)}>{peopleWords.endIt}</Button>}
             </span>
           </li>
         ))}

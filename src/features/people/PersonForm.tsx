@@ -4,12 +4,13 @@ import { Field } from '../../components/ui/Field';
 import { ROLES, type Role } from '../../domain/access/permissions';
 import type { ApiError } from '../../lib/api';
 import type { PeoplePage } from '../../schemas/api/people';
+import { personForm } from '../../words/people';
 
 export const ROLE_WORDS: Record<Role, string> = {
-  manager: 'Manager: everything, and who may do what',
-  technician: 'Commissioning technician: builds, checks and tests sites',
-  analyst: 'O&M analyst: watches sites, changes nothing on them',
-  customer: 'Customer: sees the sites given, in plain words',
+  manager: personForm.managerEverythingAndWho,
+  technician: personForm.commissioningTechnicianBuildsChecks,
+  analyst: personForm.oMAnalystWatches,
+  customer: personForm.customerSeesTheSites,
 };
 
 export interface PersonDraft {
@@ -53,7 +54,7 @@ export function PersonForm({ draft, sites, fixedEmail, fixedRole, fault, busy, s
         </p>
       )}
       <Field
-        label="Name"
+        label={personForm.name}
         value={typed.name}
         autoComplete="off"
         maxLength={120}
@@ -61,10 +62,10 @@ export function PersonForm({ draft, sites, fixedEmail, fixedRole, fault, busy, s
         onChange={(event) => change({ name: event.target.value })}
       />
       {fixedEmail ? (
-        <p className="text-ink-2">Signs in with {typed.email}</p>
+        <p className="text-ink-2">{personForm.signsInWith(typed.email)}</p>
       ) : (
         <Field
-          label="E-mail"
+          label={personForm.eMail}
           type="email"
           value={typed.email}
           autoComplete="off"
@@ -74,7 +75,7 @@ export function PersonForm({ draft, sites, fixedEmail, fixedRole, fault, busy, s
         />
       )}
       <fieldset disabled={fixedRole}>
-        <legend className="mb-1 font-medium">Role</legend>
+        <legend className="mb-1 font-medium">{personForm.role}</legend>
         {ROLES.map((role) => (
           <label key={role} className="target flex items-center gap-2.5">
             <input
@@ -88,11 +89,11 @@ export function PersonForm({ draft, sites, fixedEmail, fixedRole, fault, busy, s
             {ROLE_WORDS[role]}
           </label>
         ))}
-        {fixedRole && <p className="text-sm text-ink-2">Nobody changes their own role.</p>}
+        {fixedRole && <p className="text-sm text-ink-2">{personForm.nobodyChangesTheirOwn}</p>}
       </fieldset>
       {typed.role === 'customer' && (
         <fieldset aria-describedby={faultOf('sites') ? 'sites-fault' : undefined}>
-          <legend className="mb-1 font-medium">Sites</legend>
+          <legend className="mb-1 font-medium">{personForm.sites}</legend>
           <div className="max-h-[240px] overflow-y-auto border border-rule px-3 py-1">
             {sites.map((site) => (
               <label key={site.id} className="target flex items-center gap-2.5">

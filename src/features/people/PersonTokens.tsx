@@ -1,6 +1,6 @@
 import { Button } from '../../components/ui/Button';
-import { counted } from '../../drawings/numbers';
 import type { PersonItem } from '../../schemas/api/people';
+import { personTokens } from '../../words/people';
 
 /** Programs that act for somebody: a manager sees that there are some, and ends them. */
 export function PersonTokens({
@@ -15,12 +15,9 @@ export function PersonTokens({
   if (person.tokens === 0) return null;
   return (
     <div className="mt-5 border-t border-rule pt-4">
-      <p>
-        {counted(person.tokens, 'token')} in force, by which programs act for {person.name}. Ended ones let
-        nobody in from that moment.
-      </p>
+      <p>{personTokens.inForceByWhich(person.tokens, person.name)}</p>
       <Button className="mt-3" disabled={busy} onClick={onEnd}>
-        {person.tokens === 1 ? 'End the token' : `End all ${person.tokens} tokens`}
+        {person.tokens === 1 ? personTokens.endTheToken : personTokens.endAllTokens(person.tokens)}
       </Button>
     </div>
   );

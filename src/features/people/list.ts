@@ -1,5 +1,5 @@
-import { countAtStart, counted, number } from '../../drawings/numbers';
 import type { InvitationItem, PeoplePage, PeopleView, PersonItem } from '../../schemas/api/people';
+import { peopleList } from '../../words/people';
 
 export const PEOPLE_DEFAULTS: PeopleView = { q: '', role: 'all', show: 'active', sort: 'name' };
 
@@ -29,12 +29,12 @@ export function peopleFinding({ people, invitations }: PeoplePage): { finding: s
   const active = people.filter((p) => p.active);
   const managers = active.filter((p) => p.role === 'manager');
   const open = invitations.filter((i) => i.state === 'open').length;
-  const waiting = open > 0 ? ` ${counted(open, 'invitation waits', 'invitations wait')}.` : '';
+  const waiting = open > 0 ? ` ${peopleList.countedOpenInvitationWaits(open)}.` : '';
   return {
-    finding: `${active.length === 1 ? 'One person' : `${countAtStart(active.length)} people`} can sign in`,
+    finding: peopleList.active1OnePerson(active.length),
     sentence:
       managers.length === 1
-        ? `${managers[0]?.name ?? ''} is the only manager: invite a second one, so that nobody is locked out.${waiting}`
-        : `${number(managers.length)} of them are managers.${waiting}`,
+        ? peopleList.isTheOnlyManager(managers[0]?.name, waiting)
+        : peopleList.ofThemAreManagers(managers.length, waiting),
   };
 }

@@ -9,11 +9,12 @@ import { Tag } from '../../components/ui/Tag';
 import { api, ApiError } from '../../lib/api';
 import type { NewPlannedWork, PlannedWorkItem, PlannedWorksPage } from '../../schemas/api/planned-works';
 import { paths } from '../../schemas/paths';
+import { plannedWorksWords } from '../../words/planned-works';
 
 const STATE = {
-  going_on: { tone: 'rust', shape: '◐', words: 'going on' },
-  to_come: { tone: 'plain', shape: '○', words: 'to come' },
-  over: { tone: 'slate', shape: '✓', words: 'over' },
+  going_on: { tone: 'rust', shape: '◐', words: plannedWorksWords.goingOn },
+  to_come: { tone: 'plain', shape: '○', words: plannedWorksWords.toCome },
+  over: { tone: 'slate', shape: '✓', words: plannedWorksWords.over },
 } as const;
 
 function Work({
@@ -39,15 +40,19 @@ function Work({
           <span className="min-w-0 break-words font-medium">{work.reason}</span>
         </p>
         <p className="mt-1 text-sm text-ink-2">
-          <SiteTime at={work.startsAt} {...time} /> to <SiteTime at={work.endsAt} {...time} zone /> ·{' '}
-          {work.strings === null ? 'the whole site' : `strings ${work.strings.join(', ')}`} · entered by{' '}
-          {work.by}
-          {work.endedBy && `, ended early by ${work.endedBy}`}
+          <SiteTime at={work.startsAt} {...time} />
+          {plannedWorksWords.to}
+          <SiteTime at={work.endsAt} {...time} zone />
+          {plannedWorksWords.enteredBy(
+            work.strings === null ? 'the whole site' : `strings ${work.strings.join(', ')}`,
+            work.by,
+          )}
+          {work.endedBy && plannedWorksWords.endedEarlyBy(work.endedBy)}
         </p>
       </div>
       {work.state !== 'over' && (
         <Button disabled={busy} onClick={onEnd}>
-          {work.state === 'going_on' ? 'End it now' : 'Take it back'}
+          {work.state === 'going_on' ? plannedWorksWords.endItNow : plannedWorksWords.takeItBack}
         </Button>
       )}
     </li>
@@ -75,7 +80,9 @@ export function PlannedWorks({ initial, mayWrite }: { initial: PlannedWorksPage;
       return true;
     } catch (error) {
       setFault(
-        error instanceof ApiError ? error : new ApiError(0, 'Not sent', 'It did not work. Try again.'),
+        error instanceof ApiError
+          ? error
+          : new ApiError(0, plannedWorksWords.notSent, plannedWorksWords.itDidNotWork),
       );
       return false;
     } finally {
@@ -107,7 +114,7 @@ export function PlannedWorks({ initial, mayWrite }: { initial: PlannedWorksPage;
     <div className="grid items-start gap-5 lg:grid-cols-[minmax(0,3fr)_minmax(0,2fr)]">
       <Sheet
         id="works"
-        title="On record"
+        title={plannedWorksWords.onRecord}
         aside={
           <ButtonLink href={paths.api.plannedWorksCsv(site.id)} className="-my-2">
             CSV
@@ -115,7 +122,7 @@ export function PlannedWorks({ initial, mayWrite }: { initial: PlannedWorksPage;
         }
       >
         {page.works.length === 0 ? (
-          <p className="text-ink-2">No works have been planned here.</p>
+          <p className="text-ink-2">{plannedWorksWords.noWorksHaveBeen}</p>
         ) : (
           <ul className="divide-y divide-rule-faint">
             {page.works.map((work) => (
@@ -125,7 +132,7 @@ export function PlannedWorks({ initial, mayWrite }: { initial: PlannedWorksPage;
         )}
       </Sheet>
       {mayWrite && (
-        <Sheet id="new-work" title="Plan works">
+        <Sheet id="new-work" title={plannedWorksWords.planWorks}>
           <form
             className="grid gap-4"
             onSubmit={(event) => {
@@ -134,23 +141,23 @@ export function PlannedWorks({ initial, mayWrite }: { initial: PlannedWorksPage;
             }}
           >
             <Field
-              label="What is done"
+              label={plannedWorksWords.whatIsDone}
               value={reason}
-              placeholder="New home run of B3"
+              placeholder={plannedWorksWords.newHomeRunOf}
               onChange={(event) => setReason(event.target.value)}
               error={fault?.fault('reason') ?? null}
             />
             <div className="grid gap-4 sm:grid-cols-2">
               <Field
-                label="From"
+                label={plannedWorksWords.from}
                 type="datetime-local"
                 value={from}
                 onChange={(event) => setFrom(event.target.value)}
-                hint={`clock of ${site.timeZone}`}
+                hint={plannedWorksWords.clockOf(site.timeZone)}
                 error={fault?.fault('from') ?? null}
               />
               <Field
-                label="To"
+                label={plannedWorksWords.to2}
                 type="datetime-local"
                 value={to}
                 onChange={(event) => setTo(event.target.value)}
@@ -158,14 +165,14 @@ export function PlannedWorks({ initial, mayWrite }: { initial: PlannedWorksPage;
               />
             </div>
             <fieldset>
-              <legend className="mb-1 font-medium">Where</legend>
+              <legend className="mb-1 font-medium">{plannedWorksWords.where}</legend>
               <label className="target flex items-center gap-2">
-                <input type="radio" name="where" checked={whole} onChange={() => setWhole(true)} /> the whole
-                site
+                <input type="radio" name="where" checked={whole} onChange={() => setWhole(true)} />
+                {plannedWorksWords.theWholeSite}
               </label>
               <label className="target flex items-center gap-2">
-                <input type="radio" name="where" checked={!whole} onChange={() => setWhole(false)} /> some
-                strings
+                <input type="radio" name="where" checked={!whole} onChange={() => setWhole(false)} />
+                {plannedWorksWords.someStrings}
               </label>
               {!whole && (
                 <div className="mt-1 grid max-h-[240px] grid-cols-3 gap-x-3 overflow-y-auto border border-rule px-3 sm:grid-cols-4">
@@ -184,7 +191,7 @@ export function PlannedWorks({ initial, mayWrite }: { initial: PlannedWorksPage;
               )}
             </fieldset>
             <Button type="submit" weight="primary" disabled={busy} className="sm:w-fit">
-              Plan these works
+              {plannedWorksWords.planTheseWorks}
             </Button>
             {fault && fault.fields.length === 0 && (
               <Notice kind="failed" title={fault.title}>
@@ -193,9 +200,8 @@ export function PlannedWorks({ initial, mayWrite }: { initial: PlannedWorksPage;
             )}
           </form>
           <div className="mt-4">
-            <Caution strong="Planned works switch nothing off.">
-              Isolate, lock out and prove dead with a rated meter; units that don’t shut down are still told
-              at once.
+            <Caution strong={plannedWorksWords.plannedWorksSwitchNothing}>
+              {plannedWorksWords.isolateLockOutAnd}
             </Caution>
           </div>
         </Sheet>

@@ -9,6 +9,7 @@ import {
   type OtherString,
   type PanelProps,
 } from '../../components/readings/form';
+import { knownMore } from '../../words/readings';
 
 /** What makes an answer firmer: other strings under the same light, light and temperature measured. */
 export function KnownMore({ form, faults, typed }: PanelProps) {
@@ -19,17 +20,17 @@ export function KnownMore({ form, faults, typed }: PanelProps) {
   // only at first: a field that is emptied must not fold away under the hand
   const [used] = useState(form.others !== '' || form.poa !== '' || form.cell !== '');
   return (
-    <Fold title="Do you know more?" opens="Add it" open={used}>
+    <Fold title={knownMore.doYouKnowMore} opens={knownMore.addIt} open={used}>
       <div className="space-y-5 pb-4 pt-1">
         <fieldset>
-          <legend className="font-medium">Other strings of the same types, read under the same light</legend>
+          <legend className="font-medium">{knownMore.otherStringsOfThe}</legend>
           <input type="hidden" name="others" value={form.others} />
           <div className="mt-2 space-y-3">
             {others.map((other, i) => (
               <div key={i} className="grid grid-cols-[1fr_1fr_auto] items-start gap-2">
                 <Field
-                  label="Units"
-                  aria-label={`Units of other string ${i + 1}`}
+                  label={knownMore.units}
+                  aria-label={knownMore.unitsOfOtherString(i)}
                   inputMode="numeric"
                   autoComplete="off"
                   value={other.units}
@@ -37,8 +38,8 @@ export function KnownMore({ form, faults, typed }: PanelProps) {
                   onChange={(event) => edit(i, { units: event.target.value })}
                 />
                 <Field
-                  label="Reading"
-                  aria-label={`Reading of other string ${i + 1}, volts`}
+                  label={knownMore.reading}
+                  aria-label={knownMore.readingOfOtherString(i)}
                   unit="V"
                   inputMode="decimal"
                   autoComplete="off"
@@ -48,7 +49,7 @@ export function KnownMore({ form, faults, typed }: PanelProps) {
                 />
                 <Button
                   className="mt-6 !min-h-[44px]"
-                  aria-label={`Take other string ${i + 1} out`}
+                  aria-label={knownMore.takeOtherStringOut(i)}
                   onClick={() => set(others.filter((_, k) => k !== i))}
                 >
                   ×
@@ -61,15 +62,15 @@ export function KnownMore({ form, faults, typed }: PanelProps) {
               className="mt-2 !min-h-[44px]"
               onClick={() => set([...others, { units: form.units, volts: '' }])}
             >
-              Add a string
+              {knownMore.addAString}
             </Button>
           )}
         </fieldset>
         <fieldset>
-          <legend className="mb-2 font-medium">Measured now</legend>
+          <legend className="mb-2 font-medium">{knownMore.measuredNow}</legend>
           <div className="grid grid-cols-2 gap-3">
             <Field
-              label="Light on the modules"
+              label={knownMore.lightOnTheModules}
               name="poa"
               unit="W/m²"
               inputMode="decimal"
@@ -79,7 +80,7 @@ export function KnownMore({ form, faults, typed }: PanelProps) {
               onChange={(event) => typed({ poa: event.target.value })}
             />
             <Field
-              label="Cell temperature"
+              label={knownMore.cellTemperature}
               name="cell"
               unit="°C"
               inputMode="text"

@@ -7,12 +7,13 @@ import { Segmented } from '../../components/ui/Segmented';
 import { RANGES, chosen, type PanelProps } from '../../components/readings/form';
 import { SHEETS, SHEET_KEYS } from '../../components/readings/sheets';
 import { KIND_LABELS, stringWords } from '../../components/readings/words';
+import { stringPanel } from '../../words/readings';
 
 const OWN_FIELDS = [
-  { key: 'voc', label: 'Open-circuit voltage at STC', unit: 'V' },
-  { key: 'beta', label: 'Its change with temperature', unit: '%/K' },
-  { key: 'cells', label: 'Cells in series', unit: '' },
-  { key: 'groups', label: 'Bypass diodes', unit: '' },
+  { key: 'voc', label: stringPanel.openCircuitVoltageAt, unit: 'V' },
+  { key: 'beta', label: stringPanel.itsChangeWithTemperature, unit: '%/K' },
+  { key: 'cells', label: stringPanel.cellsInSeries, unit: '' },
+  { key: 'groups', label: stringPanel.bypassDiodes, unit: '' },
 ] as const;
 
 /** Which string: kind of unit, how many, which module. Folded away once it is right. */
@@ -21,20 +22,20 @@ export function StringPanel({ form, faults, typed, choose }: PanelProps) {
   const [wrong] = useState(['units', ...OWN_FIELDS.map((f) => f.key)].some((key) => faults[key]));
   const own = form.module === 'own';
   return (
-    <Fold title={stringWords(form)} opens="Change" open={wrong} className="mb-3">
+    <Fold title={stringWords(form)} opens={stringPanel.change} open={wrong} className="mb-3">
       <div className="space-y-4 pb-4 pt-2">
-        <Labelled label="Kind of unit">
+        <Labelled label={stringPanel.kindOfUnit}>
           <Segmented
             look="bold"
             name="kind"
-            label="Kind of unit"
+            label={stringPanel.kindOfUnit}
             value={chosen(UNIT_KINDS, form.kind, 'shutdown_only')}
             options={UNIT_KINDS.map((value) => ({ value, label: KIND_LABELS[value] }))}
             onChange={(kind) => choose({ kind })}
           />
         </Labelled>
         <Field
-          label="Units in the string"
+          label={stringPanel.unitsInTheString}
           name="units"
           inputMode="numeric"
           autoComplete="off"
@@ -43,18 +44,18 @@ export function StringPanel({ form, faults, typed, choose }: PanelProps) {
           onChange={(event) => typed({ units: event.target.value })}
         />
         <Choice
-          label="Module"
+          label={stringPanel.module}
           name="module"
           value={form.module}
           options={[
             ...SHEET_KEYS.map((key) => ({
               value: key,
-              label: `Typical, ${SHEETS[key].name} (${SHEETS[key].vocRef} V)`,
+              label: stringPanel.typicalKeyVocRefV(SHEETS[key].name, SHEETS[key].vocRef),
             })),
-            { value: 'own', label: 'Own values, from its datasheet' },
+            { value: 'own', label: stringPanel.ownValuesFromIts },
           ]}
           onChange={(module) => choose({ module })}
-          hint="Open-circuit voltage and cells decide; a like sheet is near enough."
+          hint={stringPanel.openCircuitVoltageAnd}
         />
         {own && (
           <div className="grid grid-cols-2 gap-3">

@@ -11,6 +11,7 @@ import { ReadingScale } from '../../components/readings/ReadingScale';
 import { StringPanel } from './StringPanel';
 import { DEFAULTS, PLACES, chosen, readForm, type ReadingForm } from '../../components/readings/form';
 import { HOW_TO_MEASURE, aloud, cautionParts, titleOf } from '../../components/readings/words';
+import { tryReading } from '../../words/readings';
 
 /** A meter reading and what it means, worked out as it is typed; everything that was typed stands in the address. */
 export function TryReading({ initial }: { initial: ReadingForm }) {
@@ -18,7 +19,7 @@ export function TryReading({ initial }: { initial: ReadingForm }) {
   const { question, faults, waiting } = useMemo(() => readForm(form), [form]);
   const answer = useMemo(() => (question ? interpretReading(question) : null), [question]);
   useEffect(() => {
-    document.title = `${titleOf(question, answer)} · Wakeline`;
+    document.title = tryReading.questionWakeline(titleOf(question, answer));
   }, [question, answer]);
   const typed = (some: Partial<ReadingForm>) => change(some, 'typed');
   const choose = (some: Partial<ReadingForm>) => change(some, 'chosen');
@@ -30,13 +31,13 @@ export function TryReading({ initial }: { initial: ReadingForm }) {
       <div className="grid gap-x-12 gap-y-6 lg:grid-cols-[minmax(0,500px)_minmax(0,1fr)]">
         <div className="min-w-0">
           <h1 className="text-[26px] leading-8 tracking-[-0.03em] sm:text-[32px] sm:leading-[38px]">
-            What does the meter say?
+            {tryReading.whatDoesTheMeter}
           </h1>
           <p className="mb-3 mt-1 text-[15px] leading-5 text-ink-2">{HOW_TO_MEASURE[place]}</p>
           <StringPanel form={form} faults={faults} typed={typed} choose={choose} />
           <MeterPanel form={form} faults={faults} place={place} typed={typed} choose={choose} />
           <noscript>
-            <button className="button-strong mt-3 w-full">Say what it means</button>
+            <button className="button-strong mt-3 w-full">{tryReading.sayWhatItMeans}</button>
           </noscript>
         </div>
         <div className="min-w-0 space-y-4">

@@ -1,6 +1,7 @@
 import { useEffect, useRef, useState } from 'react';
 import { Button } from '../../components/ui/Button';
 import { cameraHindrance, openDecoder, type Decoder } from '../../lib/barcode';
+import { camera } from '../../words/serials';
 
 interface Props {
   onCode: (text: string) => void;
@@ -13,12 +14,10 @@ const WIDTH = 720;
 
 const words = (error: unknown): string => {
   const name = error instanceof DOMException ? error.name : '';
-  if (name === 'NotAllowedError')
-    return 'The camera was refused. Allow it for this page in the browser’s settings, or type the serial.';
-  if (name === 'NotFoundError' || name === 'OverconstrainedError')
-    return 'No camera was found. Type the serial.';
-  if (name === 'NotReadableError') return 'Another program has the camera. Close it, or type the serial.';
-  return `The camera could not be started (${error instanceof Error ? error.message : String(error)}). Type the serial.`;
+  if (name === 'NotAllowedError') return camera.theCameraWasRefused;
+  if (name === 'NotFoundError' || name === 'OverconstrainedError') return camera.noCameraWasFound;
+  if (name === 'NotReadableError') return camera.anotherProgramHasThe;
+  return camera.theCameraCouldNot(error instanceof Error ? error.message : String(error));
 };
 
 /** The camera's picture, looked through for codes a few times a second. */
@@ -123,7 +122,7 @@ export function Camera({ onCode, onClose }: Props) {
             muted
             playsInline
             className="block max-h-[42vh] w-full object-cover"
-            aria-label="Camera"
+            aria-label={camera.camera}
           />
           <span
             aria-hidden="true"
@@ -133,19 +132,15 @@ export function Camera({ onCode, onClose }: Props) {
       )}
       <div className="flex flex-wrap items-center justify-between gap-2 p-2">
         <p className="px-1 text-sm text-ink-2" role="status">
-          {fault
-            ? ''
-            : reader === null
-              ? 'Getting ready …'
-              : 'Hold the bar code or matrix code of the label in the frame.'}
+          {fault ? '' : reader === null ? camera.gettingReady : camera.holdTheBarCode}
         </p>
         <span className="flex gap-2">
           {torch && (
             <Button aria-pressed={torch.on} onClick={() => torch.set(!torch.on)}>
-              Light {torch.on ? 'off' : 'on'}
+              {camera.lightOn(torch.on)}
             </Button>
           )}
-          <Button onClick={onClose}>Close the camera</Button>
+          <Button onClick={onClose}>{camera.closeTheCamera}</Button>
         </span>
       </div>
     </div>

@@ -2,6 +2,7 @@ import { useState } from 'react';
 import { Button } from '../../components/ui/Button';
 import { Field } from '../../components/ui/Field';
 import type { Entry, WalkString } from './model';
+import { clashList } from '../../words/serials';
 
 interface Props {
   clashes: readonly Entry[];
@@ -43,15 +44,13 @@ function Clash({
   return (
     <li className="border border-rust bg-rust-wash p-4 text-[15px] text-rust-ink">
       <div role="alert">
-        <p className="font-medium">
-          {entry.serial ?? 'Empty'} at {place} was not kept.
-        </p>
+        <p className="font-medium">{clashList.atWasNotKept(entry.serial, place)}</p>
         <p>{entry.clash?.message}</p>
       </div>
       {entry.clash?.kind !== 'other' && (
         <Field
           className="mt-3 text-ink"
-          label="Why yours is right"
+          label={clashList.whyYoursIsRight}
           value={reason}
           onChange={(event) => {
             setReason(event.target.value);
@@ -64,15 +63,13 @@ function Clash({
         {entry.clash?.kind !== 'other' && (
           <Button
             onClick={() =>
-              reason.trim().length < 3
-                ? setFault('Say why, in a few words: it stays in the history.')
-                : onInsist(entry.key, reason.trim())
+              reason.trim().length < 3 ? setFault(clashList.sayWhyInA) : onInsist(entry.key, reason.trim())
             }
           >
-            Put {entry.serial ?? 'it'} there
+            {clashList.putThere(entry.serial)}
           </Button>
         )}
-        <Button onClick={() => onDrop(entry.key)}>Leave it as it is</Button>
+        <Button onClick={() => onDrop(entry.key)}>{clashList.leaveItAsIt}</Button>
       </div>
     </li>
   );

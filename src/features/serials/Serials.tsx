@@ -14,6 +14,7 @@ import { PositionStrip } from './PositionStrip';
 import { Settings, useSettings } from './Settings';
 import { beep, tremble } from './signal';
 import { useSerials } from './use-serials';
+import { serials } from '../../words/serials';
 
 interface Props {
   initial: AsBuilt;
@@ -21,7 +22,7 @@ interface Props {
   /** Public identifier of the string to begin with. */
   string: string | null;
 }
-const REASONS = ['Unit replaced', 'Misread before', 'Wrong on the drawing'] as const;
+const REASONS = [serials.unitReplaced, serials.misreadBefore, serials.wrongOnTheDrawing] as const;
 
 /** Serials read on site, position by position, with one hand. */
 export function Serials({ initial, person, string: first }: Props) {
@@ -74,16 +75,12 @@ export function Serials({ initial, person, string: first }: Props) {
   if (!string)
     return (
       <>
-        <Crumbs
-          initial={initial}
-          finding="This site has no strings yet"
-          sentence="Make them first, then read the serials."
-        />
+        <Crumbs initial={initial} finding={serials.thisSiteHasNo} sentence={serials.makeThemFirstThen} />
         <div className="flex flex-wrap gap-2">
           <ButtonLink weight="primary" href={paths.asBuiltImport(initial.site.id)}>
-            Bring them in from a file
+            {serials.bringThemInFrom}
           </ButtonLink>
-          <ButtonLink href={paths.asBuilt(initial.site.id)}>Enter them by hand</ButtonLink>
+          <ButtonLink href={paths.asBuilt(initial.site.id)}>{serials.enterThemByHand}</ButtonLink>
         </div>
       </>
     );
@@ -99,7 +96,7 @@ export function Serials({ initial, person, string: first }: Props) {
       from && { string: from.string.id, position: from.position },
     );
     signal(true);
-    setSaid(`${serial} is at ${string.name}, position ${position}.`);
+    setSaid(serials.isAtPosition(serial, string.name, position));
     const after = {
       ...string,
       slots: string.slots.map((s) => (s.position === position ? { ...s, serial } : s)),
@@ -112,7 +109,7 @@ export function Serials({ initial, person, string: first }: Props) {
     if (result.kind === 'keep') keep(result.serial, false, '');
     else if (result.kind === 'same') {
       signal(true);
-      setSaid(`${now ?? ''} is there already.`);
+      setSaid(serials.isThereAlready(now));
       go({ position: nextGap(string, position) ?? Math.min(position + 1, string.slots.length) });
     } else {
       setJudged(result);
@@ -133,7 +130,7 @@ export function Serials({ initial, person, string: first }: Props) {
   const undo = () => {
     const back = work.undo();
     if (!back) return;
-    setSaid('Taken back.');
+    setSaid(serials.takenBack);
     go(back);
   };
   const skip = () => go({ position: position >= string.slots.length ? 1 : position + 1 });
@@ -142,11 +139,7 @@ export function Serials({ initial, person, string: first }: Props) {
     <>
       <Crumbs
         initial={initial}
-        finding={
-          <>
-            {string.name}, position {position} of {string.slots.length}
-          </>
-        }
+        finding={<>{serials.positionOf(string.name, position, string.slots.length)}</>}
         sentence={
           <>
             {slot?.roofPlace ? <strong>{upper(slot.roofPlace)}.</strong> : null} {progressWords(string)}.
@@ -163,20 +156,16 @@ export function Serials({ initial, person, string: first }: Props) {
         {work.waiting > 0 && (
           <Notice
             kind="stale"
-            title={`${work.waiting} ${work.waiting === 1 ? 'serial waits' : 'serials wait'} on this phone`}
-            action={work.away ? <Button onClick={work.sendNow}>Send now</Button> : undefined}
+            title={serials.onThisPhone(work.waiting)}
+            action={work.away ? <Button onClick={work.sendNow}>{serials.sendNow}</Button> : undefined}
           >
-            {work.away ?? 'On the way to the server.'}
+            {work.away ?? serials.onTheWayTo}
           </Notice>
         )}
         <Sheet
           id="read"
-          title={
-            <>
-              Serial at {string.name}, position {position}
-            </>
-          }
-          aside={now ? `now: ${now}` : 'empty'}
+          title={<>{serials.serialAtPosition(string.name, position)}</>}
+          aside={now ? serials.nowNow(now) : serials.empty}
         >
           {camera && <Camera onCode={onCode} onClose={() => setCamera(false)} />}
           <form
@@ -187,7 +176,7 @@ export function Serials({ initial, person, string: first }: Props) {
             }}
           >
             <label className="block">
-              <span className="sr-only">Serial</span>
+              <span className="sr-only">{serials.serial}</span>
               <input
                 ref={field}
                 value={typed}
@@ -195,7 +184,7 @@ export function Serials({ initial, person, string: first }: Props) {
                   setTyped(event.target.value);
                   setJudged(null);
                 }}
-                placeholder={now ?? 'as on the label'}
+                placeholder={now ?? serials.asOnTheLabel}
                 autoCapitalize="characters"
                 autoComplete="off"
                 autoCorrect="off"
@@ -220,18 +209,18 @@ export function Serials({ initial, person, string: first }: Props) {
             </div>
             <div className="grid grid-cols-2 gap-2 sm:grid-cols-4">
               <Button type="submit" weight="primary" className="col-span-2 min-h-[56px]">
-                Save and go on
+                {serials.saveAndGoOn}
               </Button>
               <Button className="min-h-[56px]" onClick={skip}>
-                Skip
+                {serials.skip}
               </Button>
               <Button className="min-h-[56px]" disabled={!work.canUndo} onClick={undo}>
-                Undo
+                {serials.undo}
               </Button>
             </div>
             {!camera && (
               <Button className="min-h-[56px]" onClick={() => setCamera(true)}>
-                Read with the camera
+                {serials.readWithTheCamera}
               </Button>
             )}
           </form>
@@ -239,11 +228,15 @@ export function Serials({ initial, person, string: first }: Props) {
         <PositionStrip string={string} position={position} onGo={(p) => go({ position: p })} />
         <div className="grid gap-3 sm:grid-cols-2 sm:items-end">
           <Choice
-            label="String"
+            label={serials.string}
             value={string.id}
             options={strings.map((s) => ({
               value: s.id,
-              label: `${s.name}: ${s.slots.filter((x) => x.serial !== null).length} of ${s.slots.length}`,
+              label: serials.nameFilterOfSlots(
+                s.name,
+                s.slots.filter((x) => x.serial !== null).length,
+                s.slots.length,
+              ),
             }))}
             onChange={(id) => {
               const chosen = strings.find((s) => s.id === id);
@@ -256,11 +249,11 @@ export function Serials({ initial, person, string: first }: Props) {
               weight={nextGap(string, 0) === null ? 'primary' : 'plain'}
               onClick={() => go({ string: follow.id, position: nextGap(follow, 0) ?? 1 })}
             >
-              Go to {follow.name}
+              {serials.goTo(follow.name)}
             </Button>
           ) : (
             <ButtonLink className="min-h-[56px]" href={paths.asBuilt(initial.site.id)}>
-              No other string has a gap: look at the as-built
+              {serials.noOtherStringHas}
             </ButtonLink>
           )}
         </div>
@@ -284,9 +277,9 @@ function Crumbs({
   return (
     <Heading
       crumbs={[
-        { label: 'Commissioning', href: paths.commissioning() },
+        { label: serials.commissioning, href: paths.commissioning() },
         { label: initial.site.name, href: paths.commissioningSite(initial.site.id) },
-        { label: 'Serials on site' },
+        { label: serials.serialsOnSite },
       ]}
       finding={finding}
       sentence={sentence}
@@ -314,7 +307,7 @@ function Question({ judged, onTake, onKeep }: QuestionProps) {
               if (judged.suggestion !== null) onTake(judged.suggestion);
             }}
           >
-            Write {judged.suggestion}
+            {serials.writeSuggestion(judged.suggestion)}
           </Button>
         )}
       </div>
@@ -325,14 +318,10 @@ function Question({ judged, onTake, onKeep }: QuestionProps) {
     <div className="border border-rust bg-rust-wash p-3 text-[15px] text-rust-ink">
       <p className="font-medium">
         {judged.kind === 'elsewhere'
-          ? `${judged.serial} is entered at ${judged.place}.`
-          : `${judged.now} is entered here.`}
+          ? serials.isEnteredAt(judged.serial, judged.place)
+          : serials.isEnteredHere(judged.now)}
       </p>
-      <p>
-        {judged.kind === 'elsewhere'
-          ? 'Read the label again. If it is here, say why, and it is taken from there.'
-          : `If ${judged.serial} is right, say why: the history keeps both.`}
-      </p>
+      <p>{judged.kind === 'elsewhere' ? serials.readTheLabelAgain : serials.ifIsRightSay(judged.serial)}</p>
       <div className="mt-2 flex flex-wrap gap-2">
         {REASONS.map((reason) => (
           <Button key={reason} onClick={() => onKeep(judged.serial, move, reason)}>

@@ -1,4 +1,5 @@
 import { useCallback, useEffect, useState } from 'react';
+import { serialsSettings } from '../../words/serials';
 
 export interface SettingsValue {
   /** Save what the camera reads without a tap. */
@@ -36,9 +37,9 @@ export function useSettings(): [SettingsValue, (value: SettingsValue) => void] {
 }
 
 const LABELS: [keyof SettingsValue, string][] = [
-  ['atOnce', 'Save at once what the camera reads'],
-  ['beep', 'Beep when a serial is kept'],
-  ['tremble', 'Tremble when a serial is kept'],
+  ['atOnce', serialsSettings.saveAtOnceWhat],
+  ['beep', serialsSettings.beepWhenASerial],
+  ['tremble', serialsSettings.trembleWhenASerial],
 ];
 
 export function Settings({
@@ -51,7 +52,7 @@ export function Settings({
   return (
     <details className="border-t border-rule">
       <summary className="target flex cursor-pointer items-center py-2 text-[15px] text-ink-2">
-        How this phone behaves
+        {serialsSettings.howThisPhoneBehaves}
       </summary>
       {LABELS.map(([key, label]) => (
         <label key={key} className="flex min-h-[44px] items-center gap-3 text-[15px]">

@@ -1,5 +1,6 @@
 import { readSerial } from '../../domain/commissioning/import/serial';
 import type { AsBuilt, PlacementsBody } from '../../schemas/api/as-built';
+import { serialsModel } from '../../words/serials';
 
 /** Strings as they are walked, and what of a walk has not reached the server yet. */
 
@@ -113,8 +114,8 @@ export function judge(
   if (read.kind === 'empty')
     return {
       kind: 'fault',
-      message: 'Nothing is typed',
-      remedy: 'Type the serial, or skip this position.',
+      message: serialsModel.nothingIsTyped,
+      remedy: serialsModel.typeTheSerialOr,
       suggestion: null,
     };
   if (read.kind === 'fault') return read;
@@ -122,7 +123,12 @@ export function judge(
   const now = string.slots.find((s) => s.position === position)?.serial ?? null;
   if (now === serial) return { kind: 'same' };
   const other = placeOf(strings, serial, { string: string.id, position });
-  if (other) return { kind: 'elsewhere', serial, place: `${other.string.name}, position ${other.position}` };
+  if (other)
+    return {
+      kind: 'elsewhere',
+      serial,
+      place: serialsModel.whichPositionPosition(other.string.name, other.position),
+    };
   if (now !== null) return { kind: 'occupied', serial, now };
   return { kind: 'keep', serial };
 }
@@ -175,10 +181,10 @@ const ORDINALS = ['none', 'one', 'two', 'three'];
 export function progressWords(string: WalkString): string {
   const left = string.slots.filter((s) => s.serial === null).length;
   const of = string.slots.length;
-  if (left === 0) return `All ${of} serials of ${string.name} are read`;
+  if (left === 0) return serialsModel.allSerialsOfAre(of, string.name);
   if (left === of)
     return of === 1
-      ? `The one serial of ${string.name} is still to be read`
-      : `${of} serials of ${string.name} are still to be read`;
-  return `${of - left} of ${of} read, ${ORDINALS[left] ?? left} to go`;
+      ? serialsModel.theOneSerialOf(string.name)
+      : serialsModel.serialsOfAreStill(of, string.name);
+  return serialsModel.ofReadToGo(of, left, ORDINALS[left]);
 }

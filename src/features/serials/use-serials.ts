@@ -4,6 +4,7 @@ import { worthRetrying } from '../../lib/query-client';
 import type { AsBuilt, PlacedCounts } from '../../schemas/api/as-built';
 import { paths } from '../../schemas/paths';
 import { readKept, requestOf, walkStrings, withEntries, type Entry } from './model';
+import { serialsUseSerials } from '../../words/serials';
 
 const RETRY_MS = 8000;
 
@@ -63,7 +64,7 @@ export function useSerials(initial: AsBuilt, person: string) {
           return;
         }
         if (error.status === 401) {
-          setAway('You are signed out. Sign in again on this phone: what you read is kept and is sent then.');
+          setAway(serialsUseSerials.youAreSignedOut);
           return;
         }
         const field = error.fields.find((f) => f.field.startsWith('changes.0.'))?.field.split('.')[2];
@@ -129,7 +130,7 @@ export function useSerials(initial: AsBuilt, person: string) {
           expected: last.serial,
           move: false,
           ...(last.from && last.serial !== null ? { also: { ...last.from, serial: last.serial } } : {}),
-          reason: 'Taken back on site',
+          reason: serialsUseSerials.takenBackOnSite,
           at: new Date().toISOString(),
           clash: null,
         },

@@ -7,6 +7,7 @@ import type { OrganisationSettings } from '../../schemas/api/settings';
 import { paths } from '../../schemas/paths';
 import { Saved } from './Saved';
 import { useSaving } from './use-saving';
+import { logoSheet } from '../../words/settings';
 
 interface Props {
   settings: OrganisationSettings;
@@ -20,20 +21,22 @@ export function LogoSheet({ settings, mayWrite, onSaved }: Props) {
   const { busy, kept, fault, save, error } = useSaving(onSaved);
   const { logo } = settings;
   return (
-    <Sheet id="logo" title="Logo">
+    <Sheet id="logo" title={logoSheet.logo}>
       {logo ? (
         <img
           src={paths.api.logo(logo)}
-          alt={`Logo of ${settings.name}`}
+          alt={logoSheet.logoOf(settings.name)}
           className="max-h-[96px] max-w-full border border-rule-faint bg-[#fff] p-3"
         />
       ) : (
-        <p className="text-ink-2">None yet. It stands on your customers’ pages and on month reports.</p>
+        <p className="text-ink-2">{logoSheet.noneYetItStands}</p>
       )}
       {mayWrite && (
         <div className="mt-4 flex flex-wrap items-end gap-3">
           <label className="block">
-            <span className="mb-1 block font-medium">{logo ? 'Another picture' : 'A picture'}</span>
+            <span className="mb-1 block font-medium">
+              {logo ? logoSheet.anotherPicture : logoSheet.aPicture}
+            </span>
             <input
               type="file"
               accept="image/png,image/jpeg,image/webp"
@@ -56,14 +59,14 @@ export function LogoSheet({ settings, mayWrite, onSaved }: Props) {
                 void save(() => api<OrganisationSettings>(paths.api.logo(), { method: 'DELETE' }))
               }
             >
-              Take it away
+              {logoSheet.takeItAway}
             </Button>
           )}
         </div>
       )}
       <p className="mt-2 text-sm text-ink-2">
-        PNG, JPEG or WebP, at most 5 MB. The picture is made anew; nothing else in the file is kept.
-        {share !== null && ` ${Math.round(share * 100)} % sent.`}
+        {logoSheet.pngJPEGOrWebP}
+        {share !== null && logoSheet.roundSent(Math.round(share * 100))}
       </p>
       {error('body') && (
         <p role="alert" className="mt-2 text-sm font-medium text-rust-ink">

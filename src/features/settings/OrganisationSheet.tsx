@@ -8,6 +8,7 @@ import { CURRENCIES, type OrganisationSettings } from '../../schemas/api/setting
 import { paths } from '../../schemas/paths';
 import { Saved } from './Saved';
 import { useSaving } from './use-saving';
+import { organisationSheet } from '../../words/settings';
 
 interface Props {
   settings: OrganisationSettings;
@@ -27,7 +28,7 @@ export function OrganisationSheet({ settings, mayWrite, onSaved }: Props) {
   );
   const { busy, kept, fault, save, error } = useSaving(onSaved);
   return (
-    <Sheet id="organisation" title="Organisation">
+    <Sheet id="organisation" title={organisationSheet.organisation}>
       <form
         onSubmit={(event) => {
           event.preventDefault();
@@ -47,66 +48,66 @@ export function OrganisationSheet({ settings, mayWrite, onSaved }: Props) {
         }}
       >
         <fieldset disabled={!mayWrite || busy} className="grid gap-x-6 gap-y-4 sm:grid-cols-2">
-          <legend className="sr-only">Organisation</legend>
+          <legend className="sr-only">{organisationSheet.organisation}</legend>
           <Field
-            label="Name"
+            label={organisationSheet.name}
             value={name}
             onChange={(e) => setName(e.target.value)}
             error={error('name')}
             required
           />
           <Field
-            label="Telephone"
+            label={organisationSheet.telephone}
             type="tel"
             value={phone}
             onChange={(e) => setPhone(e.target.value)}
             error={error('phone')}
-            hint="Stands on your customers’ pages and letters."
+            hint={organisationSheet.standsOnYourCustomers}
           />
           <Choice
-            label="Time zone"
+            label={organisationSheet.timeZone}
             value={timeZone}
             onChange={setTimeZone}
             options={settings.timeZones.map((zone) => ({ value: zone, label: zone.replaceAll('_', ' ') }))}
-            hint="For times that belong to no site. Each site keeps its own."
+            hint={organisationSheet.forTimesThatBelong}
             error={error('timeZone')}
           />
           <Choice
-            label="Money"
+            label={organisationSheet.money}
             value={currency}
             onChange={setCurrency}
             options={[
-              { value: '', label: 'none: no money is shown' },
+              { value: '', label: organisationSheet.noneNoMoneyIs },
               ...CURRENCIES.map((code) => ({ value: code, label: code })),
             ]}
-            hint="Prices a kWh are set on each site’s figures."
+            hint={organisationSheet.pricesAKWhAre}
             error={error('currency')}
           />
           <Choice
-            label="Temperatures"
+            label={organisationSheet.temperatures}
             value={units}
             onChange={(wanted) => setUnits(wanted === 'imperial' ? 'imperial' : 'metric')}
             options={[
-              { value: 'metric', label: 'in °C' },
-              { value: 'imperial', label: 'in °F' },
+              { value: 'metric', label: organisationSheet.inC },
+              { value: 'imperial', label: organisationSheet.inF },
             ]}
-            hint="What is read. Data sheets and files keep °C."
+            hint={organisationSheet.whatIsReadData}
             error={error('units')}
           />
           <Field
-            label="Raw readings are shown for"
+            label={organisationSheet.rawReadingsAreShown}
             inputMode="numeric"
             unit="days"
             value={hide}
             placeholder="90"
             onChange={(e) => setHide(e.target.value)}
             error={error('hideRawAfterDays')}
-            hint="Empty: as long as the installation keeps them, 90 days. Sums of quarters and days stay."
+            hint={organisationSheet.emptyAsLongAs}
           />
         </fieldset>
         {mayWrite && (
           <Button type="submit" weight="primary" disabled={busy} className="mt-4">
-            {busy ? 'Saving' : 'Save'}
+            {busy ? organisationSheet.saving : organisationSheet.save}
           </Button>
         )}
         <Saved kept={kept} fault={fault} />

@@ -1,11 +1,11 @@
 import { useState } from 'react';
 import { Heading } from '../../components/ui/Heading';
-import { counted } from '../../drawings/numbers';
 import type { OrganisationSettings } from '../../schemas/api/settings';
 import { paths } from '../../schemas/paths';
 import { LogoSheet } from './LogoSheet';
 import { OrganisationSheet } from './OrganisationSheet';
 import { ThresholdsSheet } from './ThresholdsSheet';
+import { settingsBoard } from '../../words/settings';
 
 /** What holds for a whole organisation. */
 export function SettingsBoard({ initial, mayWrite }: { initial: OrganisationSettings; mayWrite: boolean }) {
@@ -15,23 +15,20 @@ export function SettingsBoard({ initial, mayWrite }: { initial: OrganisationSett
   return (
     <>
       <Heading
-        finding={`Settings of ${settings.name}`}
+        finding={settingsBoard.settingsOf(settings.name)}
         sentence={
           <>
-            They hold for {counted(settings.sites, 'site')}.{' '}
-            {own === 0
-              ? 'Every judgement uses its default figures.'
-              : `${counted(own, 'threshold differs', 'thresholds differ')} from the default.`}{' '}
+            {settingsBoard.theyHoldForSites(settings.sites, own)}
             {mayWrite ? (
               <>
-                Every change is{' '}
+                {settingsBoard.everyChangeIs}
                 <a className="link" href={`${paths.audit()}?area=settings`}>
-                  on record
+                  {settingsBoard.onRecord}
                 </a>
                 .
               </>
             ) : (
-              'Managers change them.'
+              settingsBoard.managersChangeThem
             )}
           </>
         }

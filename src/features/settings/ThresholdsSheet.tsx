@@ -8,6 +8,7 @@ import type { OrganisationSettings } from '../../schemas/api/settings';
 import { paths } from '../../schemas/paths';
 import { Saved } from './Saved';
 import { useSaving } from './use-saving';
+import { thresholdsSheet } from '../../words/settings';
 
 interface Props {
   settings: OrganisationSettings;
@@ -25,11 +26,12 @@ export function ThresholdsSheet({ settings, mayWrite, onSaved }: Props) {
   );
   const { busy, kept, fault, save, error } = useSaving(onSaved);
   return (
-    <Sheet id="thresholds" title="Thresholds of the judgements" aside="empty: the default">
-      <p className="mb-4 max-w-[76ch] text-ink-2">
-        They hold from the next judgement on; what was judged before stays as it was. Limits of rapid shutdown
-        (30 V, the rule set’s time) are no setting.
-      </p>
+    <Sheet
+      id="thresholds"
+      title={thresholdsSheet.thresholdsOfTheJudgements}
+      aside={thresholdsSheet.emptyTheDefault}
+    >
+      <p className="mb-4 max-w-[76ch] text-ink-2">{thresholdsSheet.theyHoldFromThe}</p>
       <form
         onSubmit={(event) => {
           event.preventDefault();
@@ -39,7 +41,7 @@ export function ThresholdsSheet({ settings, mayWrite, onSaved }: Props) {
         }}
       >
         <fieldset disabled={!mayWrite || busy} className="grid gap-x-8 gap-y-5 md:grid-cols-2">
-          <legend className="sr-only">Thresholds</legend>
+          <legend className="sr-only">{thresholdsSheet.thresholds}</legend>
           {THRESHOLDS.map((t) => (
             <Field
               key={t.key}
@@ -51,9 +53,7 @@ export function ThresholdsSheet({ settings, mayWrite, onSaved }: Props) {
               onChange={(event) => setTyped({ ...typed, [t.key]: event.target.value })}
               error={error(t.key)}
               hint={
-                <>
-                  {t.changes} Default: {t.defaultWords} ({t.source}).
-                </>
+                <>{thresholdsSheet.changesDefaultDefaultWordsSource(t.changes, t.defaultWords, t.source)}</>
               }
             />
           ))}
@@ -61,10 +61,10 @@ export function ThresholdsSheet({ settings, mayWrite, onSaved }: Props) {
         {mayWrite && (
           <div className="mt-5 flex flex-wrap gap-3">
             <Button type="submit" weight="primary" disabled={busy}>
-              {busy ? 'Saving' : 'Save the thresholds'}
+              {busy ? thresholdsSheet.saving : thresholdsSheet.saveTheThresholds}
             </Button>
             <Button disabled={busy} onClick={() => setTyped({})}>
-              All defaults
+              {thresholdsSheet.allDefaults}
             </Button>
           </div>
         )}

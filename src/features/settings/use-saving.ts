@@ -1,6 +1,7 @@
 import { useState } from 'react';
 import { ApiError } from '../../lib/api';
 import type { OrganisationSettings } from '../../schemas/api/settings';
+import { settingsUseSaving } from '../../words/settings';
 
 /** One form of the settings: sends, shows what was wrong at its field, and says when it is kept. */
 export function useSaving(onSaved: (settings: OrganisationSettings) => void) {
@@ -18,7 +19,7 @@ export function useSaving(onSaved: (settings: OrganisationSettings) => void) {
       setFault(
         error instanceof ApiError
           ? error
-          : new ApiError(0, 'Not saved', 'It could not be sent. What you typed is still here; try again.'),
+          : new ApiError(0, settingsUseSaving.notSaved, settingsUseSaving.itCouldNotBe),
       );
     }
     setBusy(false);

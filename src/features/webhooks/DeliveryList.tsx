@@ -3,9 +3,9 @@ import { Fold } from '../../components/ui/Fold';
 import { Tag } from '../../components/ui/Tag';
 import { SiteTime } from '../../components/ui/Time';
 import { KINDS } from '../../domain/notices/kinds';
-import { number } from '../../drawings/numbers';
 import type { DeliveryItem } from '../../schemas/api/webhooks';
 import { stateWords } from './words';
+import { deliveryList } from '../../words/webhooks';
 
 interface Props {
   deliveries: readonly DeliveryItem[];
@@ -22,7 +22,7 @@ export function DeliveryList({ deliveries, at, timeZone, busy, onResend }: Props
     <ol className="divide-y divide-rule-faint">
       {deliveries.map((d) => {
         const last = d.attempts[0];
-        const kind = d.kind === 'test' ? 'Test' : KINDS[d.kind].name;
+        const kind = d.kind === 'test' ? deliveryList.test : KINDS[d.kind].name;
         return (
           <li key={d.id} className="py-3" data-state={d.state}>
             <div className="flex flex-wrap items-start justify-between gap-x-4 gap-y-2">
@@ -33,17 +33,11 @@ export function DeliveryList({ deliveries, at, timeZone, busy, onResend }: Props
                 </p>
                 <p className="text-sm text-ink-2">
                   <SiteTime at={d.createdAt} now={at} timeZone={timeZone} zone />
-                  {last && (
-                    <>
-                      {' '}
-                      · {last.status === null ? 'no answer' : `answered ${last.status}`} in{' '}
-                      {number(last.latencyMs)} ms
-                    </>
-                  )}
+                  {last && <>{deliveryList.statusNullNoAnswer(last.status, last.latencyMs)}</>}
                   {d.nextAt && last && (
                     <>
-                      {' '}
-                      · next try <SiteTime at={d.nextAt} now={at} timeZone={timeZone} />
+                      {deliveryList.nextTry}
+                      <SiteTime at={d.nextAt} now={at} timeZone={timeZone} />
                     </>
                   )}
                 </p>
@@ -54,16 +48,16 @@ export function DeliveryList({ deliveries, at, timeZone, busy, onResend }: Props
                 <Button
                   disabled={busy}
                   onClick={() => onResend(d)}
-                  aria-label={`Send again: ${kind}, ${d.id}`}
+                  aria-label={deliveryList.sendAgain2(kind, d.id)}
                 >
-                  Send again
+                  {deliveryList.sendAgain}
                 </Button>
               </span>
             </div>
-            <Fold title="What was sent, and what came back" opens="Show it" className="mt-2">
+            <Fold title={deliveryList.whatWasSentAnd} opens={deliveryList.showIt} className="mt-2">
               <pre
                 tabIndex={0}
-                aria-label="What was sent"
+                aria-label={deliveryList.whatWasSent}
                 className="overflow-x-auto whitespace-pre-wrap break-all border border-rule-faint p-3 text-sm"
               >
                 {d.body}
@@ -71,8 +65,8 @@ export function DeliveryList({ deliveries, at, timeZone, busy, onResend }: Props
               <ol className="mt-2 grid gap-1 text-sm">
                 {d.attempts.map((a) => (
                   <li key={a.at}>
-                    <SiteTime at={a.at} now={at} timeZone={timeZone} />:{' '}
-                    {a.status === null ? 'no answer' : a.status}, {number(a.latencyMs)} ms
+                    <SiteTime at={a.at} now={at} timeZone={timeZone} />
+                    {deliveryList.statusLatencyMsMs(a.status, a.latencyMs)}
                     {a.excerpt && (
                       <code className="block whitespace-pre-wrap break-all text-ink-2">{a.excerpt}</code>
                     )}

@@ -1,11 +1,12 @@
 import { Notice } from '../../components/ui/Notice';
+import { secretNotice } from '../../words/webhooks';
 
 /** The secret, shown this once. */
 export function SecretNotice({ secret }: { secret: string }) {
   return (
-    <Notice kind="done" title="Keep this secret where the receiver finds it: it is not shown again">
+    <Notice kind="done" title={secretNotice.keepThisSecretWhere}>
       <label className="block">
-        <span className="sr-only">Secret</span>
+        <span className="sr-only">{secretNotice.secret}</span>
         <input
           readOnly
           value={secret}

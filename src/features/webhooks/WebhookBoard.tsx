@@ -16,6 +16,7 @@ import { DeliveryList } from './DeliveryList';
 import { SecretNotice } from './SecretNotice';
 import { WebhookForm } from './WebhookForm';
 import { webhookFinding } from './words';
+import { webhookBoard } from '../../words/webhooks';
 
 type Act =
   | { do: 'change'; body: Record<string, unknown>; said: string }
@@ -90,7 +91,7 @@ export function WebhookBoard({ initial, view: { before, ...first }, timeZone }: 
   return (
     <>
       <Heading
-        crumbs={[{ label: 'Webhooks', href: paths.webhooks() }, { label: hook.name }]}
+        crumbs={[{ label: webhookBoard.webhooks, href: paths.webhooks() }, { label: hook.name }]}
         finding={words.finding}
         sentence={words.sentence}
         actions={
@@ -100,7 +101,7 @@ export function WebhookBoard({ initial, view: { before, ...first }, timeZone }: 
               disabled={acting.isPending}
               onClick={() => acting.mutate({ do: 'test' })}
             >
-              Make a test call
+              {webhookBoard.makeATestCall}
             </Button>
             <Button
               disabled={acting.isPending}
@@ -108,13 +109,13 @@ export function WebhookBoard({ initial, view: { before, ...first }, timeZone }: 
                 acting.mutate({
                   do: 'change',
                   body: { active: !hook.active },
-                  said: hook.active ? 'It is switched off.' : 'It is switched on.',
+                  said: hook.active ? webhookBoard.itIsSwitchedOff : webhookBoard.itIsSwitchedOn,
                 })
               }
             >
-              {hook.active ? 'Switch it off' : 'Switch it on'}
+              {hook.active ? webhookBoard.switchItOff : webhookBoard.switchItOn}
             </Button>
-            <Button onClick={() => begin('change')}>Change</Button>
+            <Button onClick={() => begin('change')}>{webhookBoard.change}</Button>
           </>
         }
       />
@@ -132,14 +133,14 @@ export function WebhookBoard({ initial, view: { before, ...first }, timeZone }: 
         </div>
       )}
       <div className="grid gap-5 lg:grid-cols-[minmax(0,1fr)_320px]">
-        <Sheet id="calls" title="Calls">
+        <Sheet id="calls" title={webhookBoard.calls}>
           <div className="no-print mb-2 flex flex-wrap items-center gap-x-4 gap-y-2">
             <Segmented
-              label="Which calls"
+              label={webhookBoard.whichCalls}
               options={[
-                { value: 'all', label: 'All' },
-                { value: 'failed', label: 'Failed' },
-                { value: 'waiting', label: 'Waiting' },
+                { value: 'all', label: webhookBoard.all },
+                { value: 'failed', label: webhookBoard.failed },
+                { value: 'waiting', label: webhookBoard.waiting },
               ]}
               value={view.show}
               onChange={(show) => setView({ show })}
@@ -152,7 +153,10 @@ export function WebhookBoard({ initial, view: { before, ...first }, timeZone }: 
             </ButtonLink>
           </div>
           {page.deliveries.length === 0 ? (
-            <Notice kind="empty" title={view.show === 'all' ? 'No call yet' : 'None of these'} />
+            <Notice
+              kind="empty"
+              title={view.show === 'all' ? webhookBoard.noCallYet : webhookBoard.noneOfThese}
+            />
           ) : (
             <DeliveryList
               deliveries={page.deliveries}
@@ -167,61 +171,73 @@ export function WebhookBoard({ initial, view: { before, ...first }, timeZone }: 
               href={withQuery(paths.webhook(id), { show: view.show, before: page.next })}
               className="mt-3"
             >
-              Older
+              {webhookBoard.older}
             </ButtonLink>
           )}
         </Sheet>
-        <Sheet id="facts" title="It calls">
+        <Sheet id="facts" title={webhookBoard.itCalls}>
           <p className="break-all">{hook.url}</p>
-          <p className="mt-3 text-sm text-ink-2">Told of</p>
+          <p className="mt-3 text-sm text-ink-2">{webhookBoard.toldOf}</p>
           <ul>
             {hook.kinds.map((kind) => (
               <li key={kind}>{KINDS[kind].name}</li>
             ))}
           </ul>
-          <p className="mt-3 text-sm text-ink-2">Added by {hook.createdBy}</p>
+          <p className="mt-3 text-sm text-ink-2">{webhookBoard.addedBy(hook.createdBy)}</p>
           <div className="mt-4 flex flex-wrap gap-2">
-            <Button onClick={() => begin('secret')}>New secret</Button>
-            <Button onClick={() => begin('remove')}>Remove it</Button>
+            <Button onClick={() => begin('secret')}>{webhookBoard.newSecret}</Button>
+            <Button onClick={() => begin('remove')}>{webhookBoard.removeIt}</Button>
           </div>
         </Sheet>
       </div>
-      <Dialog open={open === 'change'} title={`Change ${hook.name}`} onClose={() => setOpen(null)}>
+      <Dialog
+        open={open === 'change'}
+        title={webhookBoard.changeHook(hook.name)}
+        onClose={() => setOpen(null)}
+      >
         <WebhookForm
           draft={hook}
           within={page.within}
-          submit="Save"
+          submit={webhookBoard.save}
           busy={acting.isPending}
           fault={acting.error}
           onSubmit={({ name, url, kinds }) =>
-            acting.mutate({ do: 'change', body: { name, url, kinds }, said: 'The webhook is changed.' })
+            acting.mutate({
+              do: 'change',
+              body: { name, url, kinds },
+              said: webhookBoard.theWebhookIsChanged,
+            })
           }
         />
       </Dialog>
-      <Dialog open={open === 'secret'} title="Make a new secret?" onClose={() => setOpen(null)}>
-        <p>Calls are signed with it from then on. A receiver that has the old one refuses them.</p>
+      <Dialog open={open === 'secret'} title={webhookBoard.makeANewSecret} onClose={() => setOpen(null)}>
+        <p>{webhookBoard.callsAreSignedWith}</p>
         <div className="mt-4 flex gap-2">
           <Button
             weight="primary"
             disabled={acting.isPending}
             onClick={() => acting.mutate({ do: 'change', body: { newSecret: true }, said: '' })}
           >
-            Make a new secret
+            {webhookBoard.makeANewSecret2}
           </Button>
-          <Button onClick={() => setOpen(null)}>Leave it</Button>
+          <Button onClick={() => setOpen(null)}>{webhookBoard.leaveIt}</Button>
         </div>
       </Dialog>
-      <Dialog open={open === 'remove'} title={`Remove ${hook.name}?`} onClose={() => setOpen(null)}>
-        <p>It is not called any more. What it was called with stays in the record of who did what.</p>
+      <Dialog
+        open={open === 'remove'}
+        title={webhookBoard.removeHook(hook.name)}
+        onClose={() => setOpen(null)}
+      >
+        <p>{webhookBoard.itIsNotCalled}</p>
         <div className="mt-4 flex gap-2">
           <Button
             weight="primary"
             disabled={acting.isPending}
             onClick={() => acting.mutate({ do: 'remove' })}
           >
-            Remove it
+            {webhookBoard.removeIt}
           </Button>
-          <Button onClick={() => setOpen(null)}>Leave it</Button>
+          <Button onClick={() => setOpen(null)}>{webhookBoard.leaveIt}</Button>
         </div>
       </Dialog>
     </>

@@ -4,6 +4,7 @@ import { Field } from '../../components/ui/Field';
 import { KINDS, NOTICE_KINDS, type NoticeKind } from '../../domain/notices/kinds';
 import type { ApiError } from '../../lib/api';
 import type { WebhooksPage } from '../../schemas/api/webhooks';
+import { webhookForm } from '../../words/webhooks';
 
 export interface WebhookDraft {
   name: string;
@@ -20,9 +21,9 @@ interface Props {
 }
 const CALLABLE = NOTICE_KINDS.filter((kind) => KINDS[kind].callable);
 const WITHIN = {
-  nothing: 'Begins with https:// and is reached over the public network.',
-  loopback: 'Begins with https://, or is on this machine: it is a demo.',
-  everything: 'Addresses inside your network are allowed here.',
+  nothing: webhookForm.beginsWithHttpsAnd,
+  loopback: webhookForm.beginsWithHttpsOr,
+  everything: webhookForm.addressesInsideYourNetwork,
 } as const;
 
 export function WebhookForm({ draft: first, within, submit, busy, fault, onSubmit }: Props) {
@@ -43,14 +44,14 @@ export function WebhookForm({ draft: first, within, submit, busy, fault, onSubmi
         </p>
       )}
       <Field
-        label="Name"
+        label={webhookForm.name}
         value={draft.name}
-        hint="What is called, so that others know."
+        hint={webhookForm.whatIsCalledSo}
         error={fault?.fault('name')}
         onChange={(event) => setDraft({ ...draft, name: event.target.value })}
       />
       <Field
-        label="Address"
+        label={webhookForm.address}
         type="url"
         inputMode="url"
         autoComplete="off"
@@ -60,7 +61,7 @@ export function WebhookForm({ draft: first, within, submit, busy, fault, onSubmi
         onChange={(event) => setDraft({ ...draft, url: event.target.value })}
       />
       <fieldset>
-        <legend className="mb-1 font-medium">It is told of</legend>
+        <legend className="mb-1 font-medium">{webhookForm.itIsToldOf}</legend>
         {fault?.fault('kinds') && (
           <p role="alert" className="text-sm font-medium text-rust-ink">
             {fault.fault('kinds')}

@@ -17,14 +17,15 @@ import { SecretNotice } from './SecretNotice';
 import { VerifySheet } from './VerifySheet';
 import { WebhookForm, type WebhookDraft } from './WebhookForm';
 import { webhooksFinding } from './words';
+import { webhooksWords } from '../../words/webhooks';
 
 const KEY = ['webhooks'];
 const NEW: WebhookDraft = { name: '', url: '', kinds: ['hazard'] };
 
 export function StateTag({ hook }: { hook: WebhookItem }) {
-  if (!hook.active) return <Tag tone="slate">switched off</Tag>;
-  if (hook.failingSince) return <Tag tone="rust">fails</Tag>;
-  return <Tag tone="petrol">on</Tag>;
+  if (!hook.active) return <Tag tone="slate">{webhooksWords.switchedOff}</Tag>;
+  if (hook.failingSince) return <Tag tone="rust">{webhooksWords.fails}</Tag>;
+  return <Tag tone="petrol">{webhooksWords.on}</Tag>;
 }
 
 /** The organisation's webhooks. */
@@ -53,7 +54,7 @@ export function Webhooks({ initial, timeZone }: { initial: WebhooksPage; timeZon
   const columns: Column<WebhookItem>[] = [
     {
       key: 'name',
-      label: 'Webhook',
+      label: webhooksWords.webhook,
       cell: (w) => (
         <>
           <a
@@ -68,13 +69,13 @@ export function Webhooks({ initial, timeZone }: { initial: WebhooksPage; timeZon
     },
     {
       key: 'kinds',
-      label: 'Told of',
+      label: webhooksWords.toldOf,
       from: 'md',
       cell: (w) => w.kinds.map((kind) => KINDS[kind].name).join(', '),
     },
     {
       key: 'last',
-      label: 'Last taken',
+      label: webhooksWords.lastTaken,
       from: 'sm',
       cell: (w) =>
         w.lastDeliveredAt ? (
@@ -83,8 +84,8 @@ export function Webhooks({ initial, timeZone }: { initial: WebhooksPage; timeZon
           'never'
         ),
     },
-    { key: 'waiting', label: 'Waiting', numeric: true, cell: (w) => w.waiting },
-    { key: 'state', label: 'State', cell: (w) => <StateTag hook={w} /> },
+    { key: 'waiting', label: webhooksWords.waiting, numeric: true, cell: (w) => w.waiting },
+    { key: 'state', label: webhooksWords.state, cell: (w) => <StateTag hook={w} /> },
   ];
   return (
     <>
@@ -99,7 +100,7 @@ export function Webhooks({ initial, timeZone }: { initial: WebhooksPage; timeZon
               setOpen(true);
             }}
           >
-            Add a webhook
+            {webhooksWords.addAWebhook}
           </Button>
         }
       />
@@ -114,22 +115,22 @@ export function Webhooks({ initial, timeZone }: { initial: WebhooksPage; timeZon
         </div>
       )}
       <div className="grid gap-5">
-        <Sheet id="webhooks" title="Webhooks" flush>
+        <Sheet id="webhooks" title={webhooksWords.webhooks} flush>
           <Table
-            caption="Webhooks of the organisation"
+            caption={webhooksWords.webhooksOfTheOrganisation}
             columns={columns}
             rows={page.webhooks}
             rowKey={(w) => w.id}
-            empty={<Notice kind="empty" title="None yet" />}
+            empty={<Notice kind="empty" title={webhooksWords.noneYet} />}
           />
         </Sheet>
         <VerifySheet />
       </div>
-      <Dialog open={open} title="Add a webhook" onClose={() => setOpen(false)}>
+      <Dialog open={open} title={webhooksWords.addAWebhook} onClose={() => setOpen(false)}>
         <WebhookForm
           draft={NEW}
           within={page.within}
-          submit="Add it and show its secret"
+          submit={webhooksWords.addItAndShow}
           busy={making.isPending}
           fault={making.error}
           onSubmit={(draft) => making.mutate(draft)}
