@@ -2,6 +2,8 @@
 
 /** Put in by server/host.ts: whether this is `astro dev`. */
 declare const WAKELINE_DEVELOPMENT: boolean;
+/** Put in by server/host.ts: names of the migrations that the build was made with. */
+declare const WAKELINE_MIGRATIONS: readonly string[];
 
 declare namespace App {
   interface Locals {

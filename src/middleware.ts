@@ -1,4 +1,5 @@
 import { randomUUID } from 'node:crypto';
+import type { APIContext, MiddlewareNext } from 'astro';
 import { defineMiddleware } from 'astro:middleware';
 import type { TemperatureUnit } from './drawings/numbers';
 import { cookieName, signedInBy } from './server/auth/sessions';
@@ -6,8 +7,10 @@ import { config } from './server/config';
 import { AppError } from './server/errors';
 import { answerHeaders } from './server/http/headers';
 import { sameOrigin } from './server/http/origin';
+import { justWrittenCookie } from './server/http/just-written';
 import { asReader } from './server/http/reader';
 import { problem } from './server/http/problem';
+import { currentRequest, inRequest } from './server/request';
 
 const SAFE = new Set(['GET', 'HEAD', 'OPTIONS']);
 /** Addresses that are secrets and only read: the router would write one into its log that is asked for otherwise. */
@@ -24,11 +27,19 @@ function finish(response: Response, locals: App.Locals): Response {
   return response;
 }
 
-export const onRequest = defineMiddleware(async (context, next) => {
-  const { locals, request } = context;
+export const onRequest = defineMiddleware((context, next) => {
   // a rewrite to the problem page comes through here a second time
-  if (locals.requestId) return next();
-  locals.requestId = randomUUID();
+  if (context.locals.requestId) return next();
+  const current = currentRequest();
+  if (!current) return inRequest({ requestId: randomUUID() }, () => answer(context, next)); // astro dev
+  return answer(context, next);
+});
+
+async function answer(context: APIContext, next: MiddlewareNext): Promise<Response> {
+  const { locals, request } = context;
+  const current = currentRequest();
+  locals.requestId = current?.requestId ?? randomUUID();
+  if (current) current.route = context.routePattern;
   locals.actor = null;
   locals.viewer = null;
   locals.sessionId = null;
@@ -74,5 +85,7 @@ export const onRequest = defineMiddleware(async (context, next) => {
   const said = new Set(response.headers.getSetCookie().map(cookieName));
   for (const cookie of cookies)
     if (!said.has(cookieName(cookie))) response.headers.append('set-cookie', cookie);
+  const written = SAFE.has(request.method) ? undefined : justWrittenCookie();
+  if (written) response.headers.append('set-cookie', written);
   return response;
-});
+}

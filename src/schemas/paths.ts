@@ -78,7 +78,7 @@ export const paths = {
   shutdown: () => '/shutdown',
   customer: (site: string) => `/my-site/${site}`,
   customerHome: () => '/my-site',
-  status: () => '/status',
+  status: (hours?: number) => (hours === undefined ? '/status' : `/status?hours=${hours}`),
   tryReading: () => '/try-a-reading',
   methods: () => '/methods',
   /** What other programs can ask for, and how. */
@@ -238,4 +238,5 @@ export const paths = {
   },
   live: () => '/live',
   ingest: () => '/ingest/v1',
+  probes: { alive: () => '/healthz', ready: () => '/readyz', metrics: () => '/metrics' },
 } as const;

@@ -16,6 +16,9 @@ import { ERROR_KINDS } from './errors';
 import { drainedOf } from './http/drained';
 import { answerHeaders, commonHeaders } from './http/headers';
 import { log } from './log';
+import { countRequest } from './observe/meters';
+import { answerProbe } from './observe/probes';
+import { currentRequest, inRequest, requestIdOf, type CurrentRequest } from './request';
 import { refuseUpgrade, routeUpgrade, startRoles, stopRoles } from './roles';
 import { certificateFiles, secureServer } from './tls';
 
@@ -47,13 +50,16 @@ const REQUEST_MAX_BYTES = 32 * 1024 * 1024;
 /** An answer without Astro: a problem document for the API, a line of text for a browser. */
 function answer(req: IncomingMessage, res: ServerResponse, status: number, message: string): void {
   const api = req.url?.startsWith('/api/');
+  const requestId = currentRequest()?.requestId ?? '';
   res.writeHead(status, {
     ...answerHeaders(config(), { isPage: false, development: false }),
     'content-type': api ? 'application/problem+json' : 'text/plain; charset=utf-8',
     'cache-control': 'no-store',
+    'x-request-id': requestId,
     connection: 'close',
   });
-  res.end(api ? JSON.stringify({ type: 'about:blank', title: message, status, fields: [] }) : `${message}\n`);
+  const problem = { type: 'about:blank', title: message, status, fields: [], requestId };
+  res.end(api ? JSON.stringify(problem) : `${message}\n`);
 }
 
 /** What is refused before Astro sees it: it would answer these with a fault of its own. */
@@ -84,6 +90,20 @@ function refuseEarly(req: IncomingMessage, res: ServerResponse): boolean {
 function dropForwarded(req: IncomingMessage): void {
   for (const name of Object.keys(req.headers))
     if (name.startsWith('x-forwarded-') || name === 'forwarded') delete req.headers[name];
+}
+
+/** Counts the answer and writes it down. Routes, not addresses: these may carry secrets. */
+function noteAnswer(req: IncomingMessage, res: ServerResponse, request: CurrentRequest): void {
+  const startedAtMs = performance.now();
+  res.once('close', () => {
+    const seconds = (performance.now() - startedAtMs) / 1000;
+    const route = request.route ?? 'file';
+    countRequest(route, req.method, res.statusCode, seconds);
+    const ms = Math.round(seconds * 1000);
+    inRequest(request, () =>
+      log.info({ method: req.method, route, status: res.statusCode, ms }, 'a request was answered'),
+    );
+  });
 }
 
 /** A rejection that nobody handles leaves the process in a state nobody thought of: say so and end. */
@@ -120,12 +140,27 @@ async function startServer(handler: Handler, options: StartOptions): Promise<Run
       if (path.startsWith('/_astro/')) res.setHeader('Cache-Control', 'public, max-age=31536000, immutable');
     },
   });
-  const listener: RequestListener = (req, res) => {
+  const take: RequestListener = (req, res) => {
     if (!settings.TRUST_PROXY) dropForwarded(req); // Astro believes them from anybody
     if (refuseEarly(req, res)) return;
     const forLoggers = takesReadings && req.url?.startsWith(paths.api.v1Ingest());
     if (!isWeb && !forLoggers) return answer(req, res, 404, 'This process serves no pages.');
     assets(req, res, () => void handler(req, res, undefined, { drained: drainedOf(res) })); // without `next`: unknown paths get the 404 page
+  };
+  const listener: RequestListener = (req, res) => {
+    const probe = answerProbe(req, res);
+    if (probe) {
+      probe.catch((error: unknown) => {
+        log.error({ error }, 'a probe failed');
+        res.destroy();
+      });
+      return;
+    }
+    const request: CurrentRequest = {
+      requestId: requestIdOf(req.headers['x-request-id'], settings.TRUST_PROXY),
+    };
+    noteAnswer(req, res, request);
+    inRequest(request, () => take(req, res));
   };
   const files = certificateFiles(settings);
   const secure = files && secureServer(files, listener);

@@ -7,8 +7,11 @@ import zlib from 'node:zlib';
 import node from '@astrojs/node';
 import type { AstroIntegration } from 'astro';
 import { build } from 'esbuild';
+import { paths } from '../schemas/paths';
+import { migrationsKnown } from './observe/migrations-known';
 
 type Roles = typeof import('./roles');
+type Probes = typeof import('./observe/probes');
 
 const COMPRESSED = /\.(js|css|html|svg|json|xml|txt)$/;
 const WORTH_BYTES = 1024;
@@ -60,7 +63,14 @@ export default function host(): AstroIntegration {
       'astro:config:setup': (setup) => {
         // not Astro's own word for it, which a build that a test runner starts takes from the runner
         const development = setup.command === 'dev';
-        setup.updateConfig({ vite: { define: { WAKELINE_DEVELOPMENT: String(development) } } });
+        setup.updateConfig({
+          vite: {
+            define: {
+              WAKELINE_DEVELOPMENT: String(development),
+              WAKELINE_MIGRATIONS: JSON.stringify(migrationsKnown()),
+            },
+          },
+        });
         return base.hooks['astro:config:setup']?.(setup);
       },
       'astro:config:done': (done) =>
@@ -79,6 +89,13 @@ export default function host(): AstroIntegration {
           (roles ??= server.ssrLoadModule('/src/server/roles.ts') as Promise<Roles>);
         const report = (error: unknown): void =>
           logger.error(error instanceof Error ? (error.stack ?? error.message) : String(error));
+        const probes = new Set<string>(Object.values(paths.probes).map((path) => path()));
+        server.middlewares.use((req, res, next) => {
+          if (!probes.has(req.url?.split('?', 1)[0] ?? '')) return next();
+          (server.ssrLoadModule('/src/server/observe/probes.ts') as Promise<Probes>)
+            .then((loaded) => loaded.answerProbe(req, res))
+            .catch(next);
+        });
         server.httpServer?.once('listening', () => {
           load()
             .then((loaded) => loaded.startRoles())

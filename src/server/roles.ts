@@ -9,6 +9,8 @@ import { startWorker, stopWorker } from './jobs/worker';
 import { startLive, stopLive } from './live/service';
 import { handleLiveUpgrade } from './live/upgrade';
 import { log } from './log';
+import { startSampler, stopSampler } from './observe/sampler';
+import { inRequest, requestIdOf } from './request';
 
 /** What this process does besides serving pages, by its roles: started in this order, stopped in the reverse. */
 const SERVICES: readonly { role: ProcessRole; start: () => Promise<void>; stop: () => Promise<void> }[] = [
@@ -20,11 +22,13 @@ const SERVICES: readonly { role: ProcessRole; start: () => Promise<void>; stop: 
 export async function startRoles(): Promise<void> {
   const { WAKELINE_ROLES: roles } = config();
   for (const { role, start } of SERVICES) if (roles.includes(role)) await start();
+  await startSampler();
 }
 
 /** Loggers are let go first: what they sent is committed and acknowledged, or they keep it. */
 export async function stopRoles(): Promise<void> {
   const { WAKELINE_ROLES: roles } = config();
+  await stopSampler();
   for (const { role, stop } of [...SERVICES].reverse())
     if (roles.includes(role))
       await stop().catch((error: unknown) => log.error({ error, role }, 'a part did not stop in order'));
@@ -55,10 +59,13 @@ export function routeUpgrade(req: IncomingMessage, socket: Duplex, head: Buffer)
   if (!handle) return false;
   const drop = (): void => void socket.destroy();
   socket.on('error', drop);
-  Promise.resolve(handle(req, socket, head)).catch((error: unknown) => {
-    log.error({ error, path }, 'an upgrade failed');
-    if (socket.writable) refuseUpgrade(socket, '503 Service Unavailable');
-    else socket.destroy();
-  });
+  const requestId = requestIdOf(req.headers['x-request-id'], config().TRUST_PROXY);
+  inRequest({ requestId }, () =>
+    Promise.resolve(handle(req, socket, head)).catch((error: unknown) => {
+      log.error({ error, path }, 'an upgrade failed');
+      if (socket.writable) refuseUpgrade(socket, '503 Service Unavailable');
+      else socket.destroy();
+    }),
+  );
   return true;
 }

@@ -93,6 +93,7 @@ describe('every table', () => {
       'installation',
       'knex_migrations',
       'knex_migrations_lock',
+      'process_sample',
       'rate_limit',
       'rollup_watermark',
     ]);

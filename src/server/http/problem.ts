@@ -15,7 +15,7 @@ export function explain(error: unknown): AppError | undefined {
 /** An RFC 9457 problem document. Above 499 the reason stays inside, in the log under the request id. */
 export function problem(error: unknown, requestId: string): Response {
   const known = explain(error);
-  if (!known || ERROR_KINDS[known.kind].status > 499) log.error({ requestId, error }, 'a request failed');
+  if (!known || ERROR_KINDS[known.kind].status > 499) log.error({ error }, 'a request failed');
   const kind: ErrorKind | 'internal' = known?.kind ?? 'internal';
   const status = known ? ERROR_KINDS[known.kind].status : 500;
   const body = {

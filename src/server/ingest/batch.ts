@@ -22,6 +22,8 @@ export interface Item {
   gateways: ReadonlyMap<number, number>;
   /** Frames of it that are in batches already. */
   taken: number;
+  /** When it joined the queue, ms of the process's clock. */
+  addedAtMs?: number;
   /** Why a part of it can never be written; null: nothing stands against it. */
   fault: string | null;
   /** Called once, after COMMIT. */

@@ -14,7 +14,8 @@ import {
 import { judgedSite } from '../queries/judgement-contexts';
 import { UNCHANGED } from '../../domain/verdicts/evidence';
 import { seenPassing } from '../../domain/verdicts/conductors';
-import type { KnownLogger } from '../queries/ingest-loggers';
+import { servedElsewhere, type KnownLogger } from '../queries/ingest-loggers';
+import { thisProcess } from '../process';
 import { CHANNELS, sendNotices } from '../queries/live-notices';
 import type { Batch } from './batch';
 import { expectedModules } from './expected-modules';
@@ -26,6 +27,8 @@ import type { Written } from './write-batch';
 
 const SWEEP_EVERY_MS = 10_000;
 const AIR_EVERY_S = 300;
+/** What is known of other processes' loggers is asked for again after this, seconds. */
+const ELSEWHERE_FRESH_S = 5;
 const FRAMES_A_READ = 400;
 /** A string that was never judged is judged from so long ago on, seconds. */
 const FIRST_LOOK_BACK_S = 6 * 3600;
@@ -59,6 +62,8 @@ export class Judgement {
   private stopping = false;
   private readonly startedS = Math.floor(Date.now() / 1000);
   private readonly lastServedS = new Map<number, number>();
+  /** Loggers of other processes and when they last spoke, as of `atS`. */
+  private elsewhere: { atS: number; spokeS: ReadonlyMap<number, number> } = { atS: 0, spokeS: new Map() };
 
   constructor(private readonly host: JudgementHost) {
     this.writer = new JudgeWriter({
@@ -97,6 +102,13 @@ export class Judgement {
     } catch (error) {
       if (!isDatabaseAway(error)) throw error; // the locks went with the connection
     }
+  }
+
+  /** Sites that this process judges, and those among them that are being caught up with. */
+  figures(): { sitesJudged: number; sitesBehind: number } {
+    let sitesBehind = 0;
+    for (const site of this.sites.values()) if (site.catchingUp) sitesBehind++;
+    return { sitesJudged: this.sites.size, sitesBehind };
   }
 
   /** The plant or its commands changed, or another process wrote frames: reads the site again. */
@@ -306,7 +318,7 @@ export class Judgement {
   private async sweepSite(judge: SiteJudge, nowS: number): Promise<void> {
     if (nowS - judge.airLookedAtS >= AIR_EVERY_S)
       judge.takeAir(await temperatureAirOf(database('ingest'), judge.site.id), nowS);
-    const progress = this.progressOf(nowS);
+    const progress = await this.progressOf(judge, nowS);
     const outcomes: { site: SiteJudge; outcome: Outcome }[] = [];
     for (const judged of [...judge.strings.values()]) {
       const atS = eventTime(progress(judged.string.loggerId), judge.reportIntervalS, nowS);
@@ -346,15 +358,27 @@ export class Judgement {
     return outcomes;
   }
 
-  /** How far the reports of each logger are known to have come. */
-  private progressOf(nowS: number): (loggerId: number | null) => Progress {
+  /**
+   * How far the reports of each logger are known to have come. One that another process serves is followed too, by what
+   * is stored of it: while it brings what it kept through an outage, nothing of its past is over yet.
+   */
+  private async progressOf(judge: SiteJudge, nowS: number): Promise<(loggerId: number | null) => Progress> {
+    if (nowS - this.elsewhere.atS >= ELSEWHERE_FRESH_S)
+      this.elsewhere = { atS: nowS, spokeS: await servedElsewhere(database('ingest'), thisProcess().id) };
     const served = new Map(this.host.progress().map((p) => [p.logger.id, p]));
     for (const id of served.keys()) this.lastServedS.set(id, nowS);
     return (loggerId) => {
-      const p = loggerId === null ? undefined : served.get(loggerId);
-      const lastS = loggerId === null ? undefined : this.lastServedS.get(loggerId);
+      if (loggerId === null) return { served: false, sinceS: this.startedS };
+      const p = served.get(loggerId);
       if (p) return { served: true, spokeS: Math.floor(p.spokeAt / 1000), newestS: p.newestS };
-      return { served: false, sinceS: lastS ?? this.startedS };
+      const spokeS = this.elsewhere.spokeS.get(loggerId);
+      if (spokeS === undefined)
+        return { served: false, sinceS: this.lastServedS.get(loggerId) ?? this.startedS };
+      this.lastServedS.set(loggerId, nowS);
+      let newestS = 0;
+      for (const { string, memory } of judge.strings.values())
+        if (string.loggerId === loggerId) newestS = Math.max(newestS, memory.atS);
+      return { served: true, spokeS, newestS };
     };
   }
 }

@@ -3,6 +3,7 @@ import type pg from 'pg';
 import { connect } from '../db/pools';
 import { isDatabaseAway } from '../errors';
 import { log } from '../log';
+import { meters } from '../observe/meters';
 import type { FrameRow } from '../queries/ingest-rows';
 import { takeBatch, type Batch, type Item, type Work } from './batch';
 import { Days, GatewaysHeard, writeBatch, type Written } from './write-batch';
@@ -49,6 +50,7 @@ export class Lane {
 
   add(item: Item): void {
     if (this.stopping) return;
+    item.addedAtMs = performance.now();
     this.queue.push(item);
     this.running ??= this.run().finally(() => {
       this.running = undefined;
@@ -75,6 +77,7 @@ export class Lane {
         readings += item.readings;
         if (item.fault === null) item.written();
         else item.refused(item.fault);
+        meters().ack.observe((performance.now() - (item.addedAtMs ?? 0)) / 1000);
       }
       this.hooks.relieved(readings);
       // judging and telling go on while the next batch is written, but in the order of the batches
@@ -87,8 +90,10 @@ export class Lane {
   }
 
   private async follow(batch: Batch, written: Written): Promise<void> {
+    const committedAtMs = performance.now();
     try {
       await this.hooks.written(batch, written);
+      meters().judged.observe((performance.now() - committedAtMs) / 1000);
     } catch (error) {
       log.error({ error }, 'what follows a written batch failed');
     }
@@ -127,7 +132,10 @@ export class Lane {
       await this.days.refresh(this.client, nowS);
       this.daysAtS = nowS;
     }
-    return writeBatch(this.client, batch, this.days, this.gateways, nowS);
+    const startedAtMs = performance.now();
+    const written = await writeBatch(this.client, batch, this.days, this.gateways, nowS);
+    meters().commit.observe((performance.now() - startedAtMs) / 1000);
+    return written;
   }
 
   private async dropClient(): Promise<void> {

@@ -1,4 +1,5 @@
 import type { Batch, Item } from './batch';
+import { meters } from '../observe/meters';
 import { Lane } from './lane';
 import type { Written } from './write-batch';
 
@@ -19,6 +20,8 @@ export class Queue {
   readonly lanes: Lane[];
   waitingReadings = 0;
   paused = false;
+  /** The most readings that waited at once since the last look. */
+  private peak = 0;
   /** Times that sockets had to be paused. */
   pauses = 0;
 
@@ -36,11 +39,19 @@ export class Queue {
 
   add(item: Item): void {
     this.waitingReadings += item.readings;
+    this.peak = Math.max(this.peak, this.waitingReadings);
     this.lanes[item.siteId % LANES]!.add(item);
     if (this.paused || this.waitingReadings <= PAUSE_ABOVE) return;
     this.paused = true;
     this.pauses++;
+    meters().pauses.add();
     this.hooks.pressure(true);
+  }
+
+  takePeak(): number {
+    const { peak } = this;
+    this.peak = this.waitingReadings;
+    return peak;
   }
 
   async stop(): Promise<void> {

@@ -1,5 +1,6 @@
 import { database } from '../db/pools';
 import { log } from '../log';
+import { meters, refusalClass } from '../observe/meters';
 import { countRefusals, countWrongTokens, type Refusal, type WrongTokens } from '../queries/ingest-refusals';
 
 /** Kinds that one logger, and addresses that all together may add between two writings; more are counted as one. */
@@ -30,6 +31,7 @@ export class Refusals {
   unknownTokens = 0;
 
   add(loggerId: number, field: string, reason: string): void {
+    meters().refused.add(1, { reason: refusalClass(field, reason) });
     const wanted = kindOf(field, reason);
     const known = this.waiting.has(`${loggerId} ${wanted}`);
     const many = !known && (this.kinds.get(loggerId) ?? 0) >= KINDS_AT_ONCE;
@@ -47,6 +49,7 @@ export class Refusals {
   /** A token that nobody knows came from there. */
   unknownToken(address: string): void {
     this.unknownTokens++;
+    meters().unknownTokens.add();
     const where = line(address, 64);
     const key = this.addresses.has(where) || this.addresses.size < ADDRESSES_AT_ONCE ? where : OTHER;
     this.addresses.set(key, {

@@ -1,8 +1,9 @@
-import { randomUUID } from 'node:crypto';
 import { WebSocketServer } from 'ws';
 import { database } from '../db/pools';
 import { isDatabaseAway } from '../errors';
+import { thisProcess } from '../process';
 import { log } from '../log';
+import { meters } from '../observe/meters';
 import { Listener } from '../live/listener';
 import {
   openRollCalls,
@@ -34,7 +35,7 @@ const TOUCH_EVERY = 6;
 
 /** Ingest of one process: its connections, the queue to the database, and the judgement of what was written. */
 export class Ingest implements SessionHost {
-  readonly process = randomUUID();
+  readonly process = thisProcess().id;
   readonly wss = new WebSocketServer({
     noServer: true,
     maxPayload: PAYLOAD_MAX_BYTES,
@@ -126,18 +127,30 @@ export class Ingest implements SessionHost {
     connections: number;
     loggers: number;
     waitingReadings: number;
+    paused: boolean;
     pauses: number;
     unknownTokens: number;
     readings: number;
+    sitesJudged: number;
+    sitesBehind: number;
+    listening: boolean;
   } {
     return {
       connections: this.sessions.size,
       loggers: this.serving.size,
       waitingReadings: this.queue.waitingReadings,
+      paused: this.queue.paused,
       pauses: this.queue.pauses,
       unknownTokens: this.refusals.unknownTokens,
       readings: this.readings,
+      ...this.judgement.figures(),
+      listening: this.listener.listening,
     };
+  }
+
+  /** The most readings that waited at once since the last call. */
+  takePeak(): number {
+    return this.queue.takePeak();
   }
 
   // ---- what sessions ask for ----
@@ -183,7 +196,11 @@ export class Ingest implements SessionHost {
 
   // ---- the queue ----
   private async written(batch: Batch, written: Written): Promise<void> {
-    for (const item of batch.finished) this.readings += item.readings;
+    let readings = 0;
+    for (const item of batch.finished) readings += item.readings;
+    this.readings += readings;
+    meters().readings.add(readings);
+    meters().frames.add(batch.frames.length);
     await this.judgement.written(batch, written);
   }
 

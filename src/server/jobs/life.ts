@@ -2,7 +2,8 @@ import pg from 'pg';
 import { config } from '../config';
 import { isDatabaseAway } from '../errors';
 import { log } from '../log';
-import { deadWorkers, freeJobsOf, holdLife } from '../queries/job-queue';
+import { meters } from '../observe/meters';
+import { deadWorkers, freeJobsOf, holdLife, oldestDueS } from '../queries/job-queue';
 
 const LOOK_EVERY_MS = 20_000;
 
@@ -35,6 +36,7 @@ export class WorkerLife {
   private async look(): Promise<void> {
     try {
       const client = (this.client ??= await this.connect());
+      meters().oldestDue.set(await oldestDueS(client));
       const dead = await deadWorkers(client, this.worker);
       if (dead.length === 0) return;
       await freeJobsOf(client, dead);

@@ -4,6 +4,7 @@ import { z } from 'zod';
 import { database } from '../db/pools';
 import { isDatabaseAway } from '../errors';
 import { log } from '../log';
+import { meters } from '../observe/meters';
 import { beginRun, endRun } from '../queries/job-runs';
 
 /** This process, as the runs of its jobs name it. */
@@ -25,10 +26,16 @@ export function recorded(task: string, work: (payload: unknown, helpers: JobHelp
     const { attempts: attempt } = helpers.job;
     const id = await beginRun(db, { task, siteId, attempt, worker: WORKER, at: new Date() });
     let done: Done = {};
+    const startedAtMs = performance.now();
+    const timed = (outcome: string): void =>
+      meters().jobs.observe((performance.now() - startedAtMs) / 1000, { kind: task, outcome });
     try {
       done = await work(payload, helpers);
       await endRun(db, id, { at: new Date(), failed: null, done });
+      timed('done');
     } catch (error) {
+      timed('failed');
+      meters().jobsFailed.add(1, { kind: task });
       const failed = error instanceof Error ? error.message : String(error);
       if (!isDatabaseAway(error)) log.error({ error, task }, 'a job failed; it is tried again');
       await endRun(db, id, { at: new Date(), failed: failed.slice(0, 2000), done }).catch(() => undefined);

@@ -3,6 +3,7 @@ import { z } from 'zod';
 import { database } from '../db/pools';
 import { sendDue } from '../mail/send-outbox';
 import { forgetRunsBefore } from '../queries/job-runs';
+import { forgetSamplesBefore } from '../queries/process-samples';
 import { writeRoofLetters } from '../services/roof-letters';
 import { sendCalls } from '../services/webhook-send';
 import { checkClosedCases } from '../services/check-closed-cases';
@@ -30,6 +31,7 @@ export interface JobKind {
 }
 
 const RUNS_KEPT_MS = 7 * 86_400_000;
+const SAMPLES_KEPT_MS = 4 * 86_400_000;
 const ofSite = z.object({ siteId: z.int() });
 const ofNight = z.object({ siteId: z.int(), day: z.iso.date() });
 
@@ -125,7 +127,11 @@ const kinds = {
       const now = new Date();
       const dropped = await keepDays(now);
       const runs = await forgetRunsBefore(database('ingest'), new Date(now.getTime() - RUNS_KEPT_MS));
-      return { dropped, runs };
+      const samples = await forgetSamplesBefore(
+        database('ingest'),
+        new Date(now.getTime() - SAMPLES_KEPT_MS),
+      );
+      return { dropped, runs, samples };
     },
   },
   pack_days: {

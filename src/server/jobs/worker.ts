@@ -78,6 +78,9 @@ async function askForCauses(runner: Runner, siteId: number): Promise<void> {
   }
 }
 
+/** Whether background jobs are done here. */
+export const worksJobs = (): boolean => shared[KEY] !== undefined;
+
 /** Lets the jobs that run come to their end. */
 export async function stopWorker(): Promise<void> {
   const working = shared[KEY];

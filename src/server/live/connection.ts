@@ -3,6 +3,7 @@ import type { Actor } from '../../domain/access/permissions';
 import { CLOSE_COME_BACK, clientMessage, type ClientMessage, type LiveMessage } from '../../schemas/live';
 import { isDatabaseAway } from '../errors';
 import { log } from '../log';
+import { meters } from '../observe/meters';
 import type { Listening } from './round';
 import { snapshotOf, subjectOf, type Subject } from './topics';
 
@@ -50,9 +51,11 @@ export class Connection {
     const { ws } = this;
     if (ws.readyState !== ws.OPEN) return;
     if (ws.bufferedAmount > WAITING_MAX_BYTES) {
+      meters().liveSlow.add();
       ws.close(CLOSE_COME_BACK, 'too slow: come back with the cursor');
       return;
     }
+    meters().liveSent.add();
     ws.send(JSON.stringify(message));
   }
 

@@ -16,6 +16,7 @@ const WAIT_MS = { first: 250, max: 5000 };
 export class Listener {
   private client: pg.Client | undefined;
   private stopped = false;
+  private hears = false;
   private loop: Promise<void> | undefined;
   private wake = new AbortController();
 
@@ -24,6 +25,11 @@ export class Listener {
     private readonly onNotice: (channel: string, payload: string) => void,
     private readonly onReturn: () => void,
   ) {}
+
+  /** Whether notices are heard now. */
+  get listening(): boolean {
+    return this.hears;
+  }
 
   /** Resolves once it listens, or at once when the database is away: it goes on trying. */
   async start(): Promise<void> {
@@ -45,11 +51,19 @@ export class Listener {
     try {
       const client = await connect('ingest');
       this.client = client;
-      const lost = new Promise<void>((resolve) => client.once('end', () => resolve()));
+      const lost = new Promise<void>((resolve) =>
+        client.once('end', () => {
+          this.hears = false;
+          resolve();
+        }),
+      );
       client.on('notification', (n) => this.onNotice(n.channel, n.payload ?? ''));
       for (const channel of this.channels) await client.query(`listen ${channel}`);
       if (this.stopped) await client.end();
-      else this.onReturn();
+      else {
+        this.hears = true;
+        this.onReturn();
+      }
       return { lost };
     } catch (error) {
       log.warn(

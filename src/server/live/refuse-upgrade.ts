@@ -1,6 +1,7 @@
 import type { Duplex } from 'node:stream';
 import { STATUS_CODES } from 'node:http';
 import { AppError, ERROR_KINDS, isDatabaseAway } from '../errors';
+import { currentRequest } from '../request';
 
 /** Answers an upgrade with a plain HTTP refusal that says why, and closes the connection. */
 export function refuseUpgrade(socket: Duplex, error: unknown): void {
@@ -16,6 +17,7 @@ export function refuseUpgrade(socket: Duplex, error: unknown): void {
     title: known ? ERROR_KINDS[known.kind].title : 'Something failed on our side',
     status,
     detail: known?.message ?? 'Try again in a minute.',
+    requestId: currentRequest()?.requestId,
   });
   const lines = [
     `HTTP/1.1 ${status} ${STATUS_CODES[status] ?? ''}`,

@@ -108,19 +108,26 @@ export async function releaseLeases(db: Knex, process: string, loggerIds: readon
   );
 }
 
-/** Loggers that were connected and are served by nobody for `graceS`: said once. Gives the sites concerned. */
-export async function tellLostLoggers(db: Knex, graceS: number): Promise<number[]> {
-  const { rows } = await db.raw<{ rows: { siteId: number }[] }>(
-    `insert into event (at, organisation_id, site_id, kind, detail)
-     select coalesce(l.last_spoke_at, now()), s.organisation_id, s.id, 'logger_lost', jsonb_build_object('logger', l.serial)
-     from logger l join site s on s.id = l.site_id
-     where l.leased_until < now() - make_interval(secs => ?)
-       and (select e.kind from event e where e.site_id = s.id and e.kind in ('logger_connected', 'logger_lost')
-              and e.detail ->> 'logger' = l.serial order by e.id desc limit 1) = 'logger_connected'
-     returning site_id as "siteId"`,
-    [graceS],
-  );
-  return rows.map((r) => r.siteId);
+/**
+ * Loggers that were connected and are served by nobody for `graceS`: said once, whichever process looks first. Gives the
+ * sites concerned.
+ */
+export function tellLostLoggers(db: Knex, graceS: number): Promise<number[]> {
+  return db.transaction(async (tx) => {
+    const turn = await tx.raw<{ rows: { mine: boolean }[] }>('select pg_try_advisory_xact_lock(727011) as mine');
+    if (!turn.rows[0]?.mine) return [];
+    const { rows } = await tx.raw<{ rows: { siteId: number }[] }>(
+      `insert into event (at, organisation_id, site_id, kind, detail)
+       select coalesce(l.last_spoke_at, now()), s.organisation_id, s.id, 'logger_lost', jsonb_build_object('logger', l.serial)
+       from logger l join site s on s.id = l.site_id
+       where l.leased_until < now() - make_interval(secs => ?)
+         and (select e.kind from event e where e.site_id = s.id and e.kind in ('logger_connected', 'logger_lost')
+                and e.detail ->> 'logger' = l.serial order by e.id desc limit 1) = 'logger_connected'
+       returning site_id as "siteId"`,
+      [graceS],
+    );
+    return rows.map((r) => r.siteId);
+  });
 }
 
 /** Whether a roll call is open at each of these sites. */
@@ -130,4 +137,14 @@ export async function openRollCalls(db: Knex, siteIds: readonly number[]): Promi
     [[...siteIds]],
   );
   return new Set(rows.map((r) => r.siteId));
+}
+
+/** Loggers that another process serves now, each with when it last spoke (epoch s, some seconds late). */
+export async function servedElsewhere(db: Knex, process: string): Promise<Map<number, number>> {
+  const { rows } = await db.raw<{ rows: { id: number; spokeS: number }[] }>(
+    `select id, extract(epoch from last_spoke_at)::int4 as "spokeS" from logger
+     where leased_until > now() and leased_by is distinct from ? and last_spoke_at is not null`,
+    [process],
+  );
+  return new Map(rows.map((r) => [r.id, r.spokeS]));
 }

@@ -59,3 +59,12 @@ export async function deadWorkers(client: pg.ClientBase, own: string): Promise<s
 export async function freeJobsOf(client: pg.ClientBase, workers: readonly string[]): Promise<void> {
   await client.query('select graphile_worker.force_unlock_workers($1::text[])', [workers]);
 }
+
+/** For how long the job has waited that has been due longest and that nobody does, seconds; 0: none is due. */
+export async function oldestDueS(client: pg.ClientBase): Promise<number> {
+  const { rows } = await client.query<{ s: number }>(
+    `select coalesce(extract(epoch from now() - min(run_at)), 0)::float8 as s
+     from graphile_worker.jobs where run_at < now() and locked_at is null and attempts < max_attempts`,
+  );
+  return rows[0]?.s ?? 0;
+}
