@@ -1,11 +1,12 @@
 import { useQuery } from '@tanstack/react-query';
-import { useMemo } from 'react';
+import { useMemo, useState } from 'react';
 import { CauseSheet } from '../../components/causes/CauseSheet';
 import { byGravity } from '../../components/causes/words';
 import { LiveHeading } from '../../components/ui/LiveHeading';
 import { NotRead } from '../../components/ui/NotRead';
 import { Notice } from '../../components/ui/Notice';
 import { Sheet } from '../../components/ui/Sheet';
+import { ShowMore } from '../../components/ui/ShowMore';
 import { useNow } from '../../components/ui/Time';
 import { useReaderZone } from '../../components/ui/reader-zone';
 import { number } from '../../drawings/numbers';
@@ -17,6 +18,7 @@ import { FleetFilters } from './FleetFilters';
 import { FleetTable } from './FleetTable';
 import { SinceLastLook } from './SinceLastLook';
 import { fleetFinding } from './finding';
+import { causesAtFirst, LINES_AT_ONCE, type Whole } from './first-page';
 import { fleetLines } from './list';
 import { changedFleet, fleetKey, fleetQuery, withAcknowledgement } from './query';
 import { FLEET_DEFAULTS, sortInWords } from './view';
@@ -24,6 +26,8 @@ import { fleetBoard } from '../../words/fleet';
 
 interface Props {
   initial: FleetNow;
+  /** Of a large fleet, of which `initial` is the first page; null: it is all. */
+  whole: Whole | null;
   view: FleetView;
   missed: Missed | null;
   /** Of the organisation: for times that belong to no site, until the reader's own is known. */
@@ -31,7 +35,7 @@ interface Props {
 }
 
 /** The fleet: what is found, what to act on, every site by need. Server-rendered, then live. */
-export function FleetBoard({ initial, view: initialView, missed, timeZone }: Props) {
+export function FleetBoard({ initial, whole, view: initialView, missed, timeZone }: Props) {
   const client = queryClient();
   const { data: fleet, error, refetch } = useQuery(fleetQuery(initial), client);
   const status = useLive('fleet', (change, kind) => {
@@ -41,14 +45,30 @@ export function FleetBoard({ initial, view: initialView, missed, timeZone }: Pro
     // a cause at a site whose telephone number or acknowledgement is not here yet
     if (kind === 'delta' && change.causes) void client.invalidateQueries({ queryKey: fleetKey });
   });
-  const [view, change] = useViewInUrl(initialView, FLEET_DEFAULTS);
+  const [view, changeView] = useViewInUrl(initialView, FLEET_DEFAULTS);
+  const [most, setMost] = useState(LINES_AT_ONCE);
+  const [allCauses, setAllCauses] = useState(false);
+  const partly = whole !== null && fleet.sites.length <= initial.sites.length ? whole : null;
+  // /live brings the rest of a large fleet within a second; who is quicker, or without it, asks
+  const askForRest = () => {
+    if (partly) void refetch();
+  };
+  const change: typeof changeView = (some, how) => {
+    setMost(LINES_AT_ONCE);
+    askForRest();
+    changeView(some, how);
+  };
   const now = useNow(initial.at);
   const readerZone = useReaderZone() ?? timeZone;
 
-  const finding = useMemo(() => fleetFinding(fleet.sites, fleet.causes), [fleet.sites, fleet.causes]);
+  const finding = useMemo(
+    () => partly?.finding ?? fleetFinding(fleet.sites, fleet.causes),
+    [partly, fleet.sites, fleet.causes],
+  );
   const lines = useMemo(() => fleetLines(fleet.sites, fleet.causes, view), [fleet.sites, fleet.causes, view]);
   const causes = useMemo(() => [...fleet.causes].sort(byGravity), [fleet.causes]);
   const zones = useMemo(() => new Map(fleet.sites.map((s) => [s.id, s.timeZone])), [fleet.sites]);
+  const shownCauses = allCauses ? causes : causesAtFirst(causes);
   const taken = (reply: AcknowledgeReply) =>
     client.setQueryData<FleetNow>(fleetKey, (old) => withAcknowledgement(old ?? initial, reply));
 
@@ -73,7 +93,7 @@ export function FleetBoard({ initial, view: initialView, missed, timeZone }: Pro
             {fleetBoard.causesToActOn}
           </h2>
           <div className="grid items-stretch gap-4 md:grid-cols-2 xl:grid-cols-3">
-            {causes.map((cause) => (
+            {shownCauses.map((cause) => (
               <CauseSheet
                 key={cause.key}
                 cause={cause}
@@ -85,6 +105,15 @@ export function FleetBoard({ initial, view: initialView, missed, timeZone }: Pro
               />
             ))}
           </div>
+          <ShowMore
+            shown={shownCauses.length}
+            of={causes.length}
+            what="causes"
+            onMore={() => {
+              setAllCauses(true);
+              askForRest();
+            }}
+          />
         </section>
       )}
       {fleet.sites.length === 0 ? (
@@ -98,19 +127,32 @@ export function FleetBoard({ initial, view: initialView, missed, timeZone }: Pro
               {fleetBoard.sites}
             </h2>
             <p className="text-sm text-ink-2" role="status">
-              {fleetBoard.viewLinesOfSites(sortInWords(view), lines.length, fleet.sites.length)}
+              {fleetBoard.viewLinesOfSites(
+                sortInWords(view),
+                partly?.lines ?? lines.length,
+                partly?.sites ?? fleet.sites.length,
+              )}
             </p>
           </div>
           <Sheet flush>
             <FleetFilters view={view} onChange={change} />
             <FleetTable
-              lines={lines}
+              lines={lines.slice(0, most)}
               view={view}
               now={now}
               onChange={change}
               onClear={() => change({ q: '', stage: 'any', show: 'all' })}
             />
           </Sheet>
+          <ShowMore
+            shown={Math.min(most, lines.length)}
+            of={partly?.lines ?? lines.length}
+            what="sites"
+            onMore={() => {
+              setMost(most + 4 * LINES_AT_ONCE);
+              askForRest();
+            }}
+          />
         </section>
       )}
     </>

@@ -1,5 +1,5 @@
 import { useQuery } from '@tanstack/react-query';
-import { useMemo } from 'react';
+import { useMemo, useState } from 'react';
 import { CauseSheet } from '../../components/causes/CauseSheet';
 import { Button, ButtonLink } from '../../components/ui/Button';
 import { Caution } from '../../components/ui/Caution';
@@ -9,6 +9,7 @@ import { Notice } from '../../components/ui/Notice';
 import { SearchInput } from '../../components/ui/SearchInput';
 import { Segmented } from '../../components/ui/Segmented';
 import { Sheet } from '../../components/ui/Sheet';
+import { ShowMore } from '../../components/ui/ShowMore';
 import { useNow } from '../../components/ui/Time';
 import { useReaderZone } from '../../components/ui/reader-zone';
 import { withQuery } from '../../lib/api';
@@ -21,7 +22,7 @@ import { paths } from '../../schemas/paths';
 import { HeldSites } from './HeldSites';
 import { UnitsTable } from './UnitsTable';
 import { shutdownFinding } from './finding';
-import { heldSites, shutdownGroups, type Group } from './groups';
+import { heldSites, shownOf, shutdownGroups, type Group } from './groups';
 import { changedShutdown, shutdownKey, shutdownQuery, withAcknowledgement } from './query';
 import { shutdownBoard } from '../../words/shutdown';
 
@@ -63,6 +64,7 @@ export function ShutdownBoard({ initial, view: initialView, timeZone }: Props) {
   const finding = useMemo(() => shutdownFinding(now.sites, now.causes), [now.sites, now.causes]);
   const groups = useMemo(() => shutdownGroups(now.causes, view), [now.causes, view]);
   const held = useMemo(() => heldSites(now.sites), [now.sites]);
+  const [whole, setWhole] = useState<ReadonlySet<Group['verdict']>>(new Set());
   const zoneOf = (siteId: string) => now.sites.find((s) => s.id === siteId)?.timeZone ?? timeZone;
 
   const section = ({ verdict, causes }: Group) => (
@@ -79,7 +81,7 @@ export function ShutdownBoard({ initial, view: initialView, timeZone }: Props) {
         </p>
       </div>
       <div className="space-y-4">
-        {causes.map((cause) => (
+        {shownOf({ verdict, causes }, whole).map((cause) => (
           <CauseSheet
             key={cause.key}
             cause={cause}
@@ -95,6 +97,12 @@ export function ShutdownBoard({ initial, view: initialView, timeZone }: Props) {
           </CauseSheet>
         ))}
       </div>
+      <ShowMore
+        shown={shownOf({ verdict, causes }, whole).length}
+        of={causes.length}
+        what="causes"
+        onMore={() => setWhole(new Set([...whole, verdict]))}
+      />
     </section>
   );
 

@@ -1,4 +1,4 @@
-import { byGravity } from '../../components/causes/words';
+import { byGravity, isHazard } from '../../components/causes/words';
 import type { CauseNow, CommandNow, SiteNow } from '../../schemas/api/now';
 import type { ShutdownView } from '../../schemas/api/shutdown';
 
@@ -7,6 +7,13 @@ export interface Group {
   verdict: CauseNow['verdict'];
   causes: CauseNow[];
 }
+
+/** Causes of one question before somebody asks for all of them. */
+export const CAUSES_AT_ONCE = 20;
+
+/** The causes of a group that are drawn: hazards all, of the others the first ones, or all where that was asked for. */
+export const shownOf = ({ verdict, causes }: Group, whole: ReadonlySet<Group['verdict']>): CauseNow[] =>
+  whole.has(verdict) || isHazard({ verdict }) ? causes : causes.slice(0, CAUSES_AT_ONCE);
 
 const oldestFirst = (a: CauseNow, b: CauseNow): number =>
   a.since.localeCompare(b.since) || a.siteName.localeCompare(b.siteName);

@@ -6,6 +6,7 @@ import { gatewaysNow, invertersNow, stringsNow } from '../queries/now';
 import { answersOf } from '../queries/roll-call';
 import { sitesNow } from '../queries/sites-now';
 import { causesNow } from '../services/causes';
+import { FleetCauses } from './fleet-causes';
 import { noticesNow } from '../queries/notices';
 import { eventItemsOf, isOfSite, serialsHeard, type Subject } from './topics';
 
@@ -142,6 +143,7 @@ type SiteParts = Pick<Change, 'site' | 'inverters' | 'gateways' | 'causes'>;
 export async function readOverviews<L extends Listening>(
   listening: readonly L[],
   sites: ReadonlySet<number>,
+  kept: FleetCauses,
 ): Promise<Delta<L>[]> {
   return asIngest(async (tx) => {
     const at = new Date();
@@ -150,7 +152,7 @@ export async function readOverviews<L extends Listening>(
       const here = listening.filter((l) => atSite(l) === siteId).map((l) => l.subject.kind);
       if (here.length > 0) parts.set(siteId, await readSite(tx, at, siteId, here));
     }
-    const fleet = await readFleet(tx, at, listening, sites);
+    const fleet = await readFleet(tx, at, listening, sites, kept);
     return listening.map((l) => ({ to: l, cursor: l.cursor, change: overviewFor(l, parts, fleet) }));
   });
 }
@@ -183,13 +185,14 @@ async function readFleet(
   at: Date,
   listening: readonly Listening[],
   changed: ReadonlySet<number>,
+  kept: FleetCauses,
 ): Promise<FleetParts | null> {
   const visible = new Set(
     listening.flatMap((l) => (l.subject.kind === 'fleet' ? [...l.subject.siteIds] : [])),
   );
   const wanted = [...changed].filter((id) => visible.has(id));
   if (wanted.length === 0) return null;
-  return { sites: await sitesNow(tx, at, wanted), causes: await causesNow(tx, at, [...visible]) };
+  return { sites: await sitesNow(tx, at, wanted), causes: await kept.read(tx, at, [...visible], changed) };
 }
 
 function overviewFor(

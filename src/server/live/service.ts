@@ -10,6 +10,7 @@ import { CHANNELS, readChanged, readNoticed } from '../queries/live-notices';
 import { Connection, type Subscription } from './connection';
 import { Listener } from './listener';
 import { Repeated } from './repeated';
+import { FleetCauses } from './fleet-causes';
 import { readNews, readNotices, readOverviews, watchedStrings, type Delta } from './round';
 import { isOfSite } from './topics';
 
@@ -36,6 +37,7 @@ export class LiveHub {
   private persons = new Set<number>();
   private everybody = false;
   private readonly notices = new Repeated(GATHER_MS, GATHER_MS, () => this.sendNotices());
+  private readonly fleetCauses = new FleetCauses();
   private readonly siteByString = new Map<number, number>();
   private readonly news = new Repeated(GATHER_MS, GATHER_MS, () => this.sendNews());
   private readonly overviews = new Repeated(GATHER_MS, OVERVIEW_EVERY_MS, () => this.sendOverviews());
@@ -202,7 +204,7 @@ export class LiveHub {
     const listening = this.listening();
     if (listening.length === 0) return;
     try {
-      this.send(await readOverviews(listening, sites), false);
+      this.send(await readOverviews(listening, sites, this.fleetCauses), false);
     } catch (error) {
       for (const id of sites) this.sites.add(id);
       throw error;

@@ -1,5 +1,5 @@
 import type { UnitKind } from '../../domain/equipment/unit-type';
-import type { InForce, StringFinding } from '../../domain/verdicts/codes';
+import { codeOf, UNIT_STATES, type InForce, type StringFinding } from '../../domain/verdicts/codes';
 import type { FindingEvidence } from '../../domain/verdicts/memory';
 import type { Tx } from '../db/transaction';
 import { SITE_VISIBLE } from './visible-site';
@@ -17,7 +17,7 @@ export interface CauseStringRow {
   logger: string | null;
   inverter: string;
   input: number;
-  /** Slots that hold a unit, in order. */
+  /** Slots that hold a unit, in order; the serials of those, or none where the string is sound. */
   positions: number[];
   serials: string[];
   /** By position − 1, as the judgement and the newest frame have them; null: none yet. Times are epoch seconds. */
@@ -50,9 +50,10 @@ export interface CauseSiteRow {
 /**
  * Every site that the actor sees, or those of the given numbers (then whoever calls has checked them), at which any unit
  * or string is not as it should be. Whole sites come, since an explanation rests as much on the units that are well.
- * Three plain statements at most, joined here: one large one went astray whenever statistics were old.
+ * Three plain statements at most, joined here: one large one went astray whenever statistics were old. Serials come with
+ * strings at which something is amiss; of the others a search for causes needs only which slots hold a unit.
  *
- * @param also `sound`: sites too at which all is well
+ * @param also `sound`: sites too at which all is well, and serials of all strings
  */
 export async function causeSites(
   tx: Tx,
@@ -62,12 +63,35 @@ export async function causeSites(
   const sites = await concernedSites(tx, siteIds, also.sound ?? false);
   if (sites.length === 0) return [];
   const ids = sites.map((s) => s.id);
-  const units = await unitsOf(tx, ids);
+  const found = await stringsOf(tx, ids);
+  const amiss = found.filter((s) => also.sound || !isSound(s)).map((s) => s.id);
+  const units = await unitsOf(tx, amiss);
+  const judged = also.sound ? () => NO_UNITS : judgedUnits;
   const strings = new Map<number, CauseStringRow[]>(ids.map((id) => [id, []]));
-  for (const row of await stringsOf(tx, ids))
-    strings.get(row.siteId)?.push({ ...row, ...(units.get(row.id) ?? { positions: [], serials: [] }) });
+  for (const row of found) strings.get(row.siteId)?.push({ ...row, ...(units.get(row.id) ?? judged(row)) });
   return sites.map((site) => ({ ...site, strings: strings.get(site.id) ?? [] }));
 }
+
+interface Units {
+  positions: number[];
+  serials: string[];
+}
+const NO_UNITS: Units = { positions: [], serials: [] };
+const SILENT = codeOf(UNIT_STATES, 'silent');
+
+/** Whether every unit of a string tells of itself, and nothing of it is amiss. */
+const isSound = (s: Pick<CauseStringRow, 'kind' | 'state' | 'verdict' | 'finding'>): boolean =>
+  s.kind !== 'shutdown_only' &&
+  s.finding === null &&
+  s.state !== null &&
+  !s.state.includes(SILENT) &&
+  (s.verdict ?? []).every((v) => v === null || v === 0);
+
+/** Slots of a judged string that hold a unit: the others have no state. */
+const judgedUnits = (s: Pick<CauseStringRow, 'state'>): Units => ({
+  positions: (s.state ?? []).flatMap((state, i) => (state === null ? [] : [i + 1])),
+  serials: [],
+});
 
 async function concernedSites(
   tx: Tx,
@@ -134,19 +158,17 @@ async function stringsOf(
   return rows;
 }
 
-async function unitsOf(
-  tx: Tx,
-  siteIds: readonly number[],
-): Promise<Map<number, { positions: number[]; serials: string[] }>> {
-  const { rows } = await tx.raw<{ rows: { stringId: number; positions: number[]; serials: string[] }[] }>(
+async function unitsOf(tx: Tx, stringIds: readonly number[]): Promise<Map<number, Units>> {
+  if (stringIds.length === 0) return new Map();
+  const { rows } = await tx.raw<{ rows: (Units & { stringId: number })[] }>(
     `select sl.string_id as "stringId", array_agg(sl.position order by sl.position) as positions,
             array_agg(u.serial order by sl.position) as serials
      from slot sl
      join placement p on p.slot_id = sl.id and p.placed_to is null
      join unit u on u.id = p.unit_id
-     where sl.site_id = any (:siteIds)
+     where sl.string_id = any (:stringIds)
      group by sl.string_id`,
-    { siteIds: [...siteIds] },
+    { stringIds: [...stringIds] },
   );
   return new Map(rows.map(({ stringId, ...units }) => [stringId, units]));
 }

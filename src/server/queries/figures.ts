@@ -222,6 +222,19 @@ export async function tariffsOf(tx: Tx, siteIds: readonly number[]): Promise<Map
   return bySite;
 }
 
+/** Prices by the public identifiers of sites that the actor sees; newest first. */
+export async function tariffsByRef(tx: Tx, siteRefs: readonly string[]): Promise<Map<string, TariffFrom[]>> {
+  const { rows } = await tx.raw<{ rows: (TariffFrom & { siteRef: string })[] }>(
+    `select site.ref as "siteRef", t.from_on::text as from, t.price_kwh::float8 as "priceKWh"
+     from tariff t join site on site.id = t.site_id
+     where site.ref = any (:siteRefs::uuid[]) and ${SITE_VISIBLE} order by t.from_on desc`,
+    { siteRefs: [...siteRefs] },
+  );
+  const bySite = new Map<string, TariffFrom[]>();
+  for (const { siteRef, ...row } of rows) bySite.set(siteRef, [...(bySite.get(siteRef) ?? []), row]);
+  return bySite;
+}
+
 /** @returns false where a price from that day is there already */
 export async function addTariff(
   tx: Tx,

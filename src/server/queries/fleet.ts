@@ -4,14 +4,18 @@ import type { CauseNow } from '../../schemas/api/now';
 import type { Tx } from '../db/transaction';
 import { SITE_VISIBLE } from './visible-site';
 
-/** Whom to call at each site (every visible one, or those of the given numbers). */
-export async function contactsOf(tx: Tx, siteIds?: readonly number[]): Promise<SiteContact[]> {
+/** Whom to call at each of the sites, by their numbers or public identifiers, as far as the actor sees them. */
+export async function contactsOf(tx: Tx, sites: readonly (number | string)[]): Promise<SiteContact[]> {
+  if (sites.length === 0) return [];
   const { rows } = await tx.raw<{ rows: SiteContact[] }>(
     `select site.ref as "siteId", site.contact_name as name, site.contact_phone as phone,
             site.shutdown_switch_place as "shutdownSwitchPlace"
-     from site where ${SITE_VISIBLE} ${siteIds ? 'and site.id = any (:siteIds)' : ''}
+     from site where ${SITE_VISIBLE} and (site.id = any (:numbers) or site.ref = any (:refs::uuid[]))
      order by site.name`,
-    siteIds ? { siteIds: [...siteIds] } : {},
+    {
+      numbers: sites.filter((s) => typeof s === 'number'),
+      refs: sites.filter((s) => typeof s === 'string'),
+    },
   );
   return rows;
 }

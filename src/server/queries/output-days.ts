@@ -29,6 +29,10 @@ export type OutputDayRow = OutputDay & { stringId: number };
 const DAY = `to_char(o.day, 'YYYY-MM-DD') as day, o.outcome, o.method, o.ratio, o.z, o.loss_wh as "lossWh",
   o.expected_wh as "expectedWh", o.signature, o.finding`;
 
+/** The newest judged day of each string `s`. */
+const NEWEST_DAY = `cross join lateral (
+  select * from output_day d where d.string_id = s.id and d.day >= :judgedSince order by d.day desc limit 1) o`;
+
 /** The judged days of one string, oldest first, both included. The caller has checked that it may be seen. */
 export async function outputDaysOf(
   tx: Tx,
@@ -60,12 +64,12 @@ export interface JudgedString extends OutputDay {
 }
 
 /**
- * How the newest judged day found each string that the actor sees (or of one site): the low ones, or all. Strings that
- * were not judged within `judgedSince` (yyyy-mm-dd) are left out.
+ * Strings that the actor sees (or of one site) that make less than they should, as their newest judged day since
+ * `judgedSince` (yyyy-mm-dd) found them. That day is looked up string by string: findings of the others are not read.
  */
-export async function judgedStrings(
+export async function lowOutputStrings(
   tx: Tx,
-  which: { siteId?: number; onlyLow: boolean; judgedSince: string },
+  which: { siteId?: number; judgedSince: string },
 ): Promise<JudgedString[]> {
   const { rows } = await tx.raw<{ rows: JudgedString[] }>(
     `select ${DAY}, site.ref as "siteRef", site.name as "siteName", site.time_zone as "timeZone", s.ref as "stringRef",
@@ -73,23 +77,41 @@ export async function judgedStrings(
             case when c.ref is not null then json_build_object('ref', c.ref, 'since', c.since, 'lossWh', c.loss_wh,
               'lossWhDay', c.loss_wh_day, 'openCase',
               (select f.ref from case_file f where f.cause_id = c.id and f.closed_at is null limit 1)) end as cause
-     from (select distinct on (string_id) * from output_day where day >= :judgedSince
-           ${which.siteId === undefined ? '' : 'and site_id = :siteId'} order by string_id, day desc) o
-     join string s on s.id = o.string_id join plane on plane.id = s.plane_id join site on site.id = s.site_id
-     left join cause c on c.site_id = o.site_id and c.kind = 'low_output' and c.closed_at is null
+     from string s join site on site.id = s.site_id join plane on plane.id = s.plane_id
+     ${NEWEST_DAY}
+     left join cause c on c.site_id = s.site_id and c.kind = 'low_output' and c.closed_at is null
        and c.string_ids @> array[s.id]
-     where ${SITE_VISIBLE} ${which.onlyLow ? `and o.outcome = 'low'` : ''}
+     where ${SITE_VISIBLE} and o.outcome = 'low' ${which.siteId === undefined ? '' : 'and s.site_id = :siteId'}
      order by site.name, s.id`,
     { judgedSince: which.judgedSince, siteId: which.siteId ?? 0 },
   );
   return rows;
 }
 
-/** Strings that make less than they should, as their newest judged day found them. */
-export const lowOutputStrings = (
+/** How many strings were judged since that day (yyyy-mm-dd), and of how many nothing could be told. */
+export async function judgedCounts(
   tx: Tx,
-  which: { siteId?: number; judgedSince: string },
-): Promise<JudgedString[]> => judgedStrings(tx, { ...which, onlyLow: true });
+  judgedSince: string,
+): Promise<{ judged: number; cantTell: number }> {
+  const { rows } = await tx.raw<{ rows: { judged: number; cantTell: number }[] }>(
+    `select count(*)::int as judged, (count(*) filter (where o.outcome = 'cant_tell'))::int as "cantTell"
+     from string s join site on site.id = s.site_id ${NEWEST_DAY} where ${SITE_VISIBLE}`,
+    { judgedSince },
+  );
+  return rows[0] ?? { judged: 0, cantTell: 0 };
+}
+
+/** Operating sites, by name, none of whose strings was judged since that day (yyyy-mm-dd). */
+export async function unjudgedSites(tx: Tx, judgedSince: string): Promise<string[]> {
+  const { rows } = await tx.raw<{ rows: { name: string }[] }>(
+    `select site.name from site
+     where ${SITE_VISIBLE} and site.stage = 'operating'
+       and not exists (select from output_day o where o.site_id = site.id and o.day >= :judgedSince)
+     order by site.name`,
+    { judgedSince },
+  );
+  return rows.map((r) => r.name);
+}
 
 /** Writes the night's judgement of a site's strings; a night judged again replaces what it said. */
 export async function writeOutputDays(

@@ -42,11 +42,14 @@ export async function sitesNow(tx: Tx, at: Date, siteIds?: readonly number[]): P
      placed as (
        select site_id, count(*)::int as units from placement
        where placed_to is null and site_id in (select id from chosen) group by site_id),
-     wired as (select site_id, count(*)::int as strings from string group by site_id),
+     wired as (
+       select site_id, count(*)::int as strings from string where site_id in (select id from chosen) group by site_id),
      made as (
        select inv.site_id, sum(inv.ac_power_max) as ac_power_max, sum(st.ac_power)::float8 as ac_power, max(st.at) as at
-       from inverter inv left join inverter_state st on st.inverter_id = inv.id group by inv.site_id),
-     reported as (select site_id, max(at) as at from string_state group by site_id),
+       from inverter inv left join inverter_state st on st.inverter_id = inv.id
+       where inv.site_id in (select id from chosen) group by inv.site_id),
+     reported as (
+       select site_id, max(at) as at from string_state where site_id in (select id from chosen) group by site_id),
      said as (
        select distinct on (c.zone_id, c.transmitter_id) c.site_id, c.in_force, c.since, c.said_by,
               coalesce(z.name, t.name) as name, case when c.zone_id is null then 'transmitter' else 'zone' end as kind
@@ -85,6 +88,23 @@ export async function sitesNow(tx: Tx, at: Date, siteIds?: readonly number[]): P
     at,
   );
   return rows.map((row) => siteOf(row, at, ratios.get(row.id) ?? null));
+}
+
+/**
+ * Numbers of the visible sites that shutdown is about: those with these public identifiers, and those where something
+ * other than a release is in force.
+ */
+export async function sitesForShutdown(tx: Tx, refs: readonly string[]): Promise<number[]> {
+  const { rows } = await tx.raw<{ rows: { id: number }[] }>(
+    `select site.id from site
+     where ${SITE_VISIBLE} and (site.ref = any (:refs::uuid[]) or exists (
+       select from (
+         select distinct on (c.zone_id, c.transmitter_id) c.in_force from command c
+         where c.site_id = site.id order by c.zone_id, c.transmitter_id, c.since desc) newest
+       where newest.in_force <> 'released'))`,
+    { refs: [...refs] },
+  );
+  return rows.map((r) => r.id);
 }
 
 function siteOf(row: Row, at: Date, performanceRatio: number | null): SiteNow {

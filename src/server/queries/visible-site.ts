@@ -27,3 +27,12 @@ export async function visibleSite(tx: Tx, ref: string): Promise<VisibleSite | un
   );
   return rows[0];
 }
+
+/** Public identifiers of sites by their numbers; whoever calls has checked that they may be seen. */
+export async function siteRefs(tx: Tx, siteIds: readonly number[]): Promise<{ id: number; ref: string }[]> {
+  const { rows } = await tx.raw<{ rows: { id: number; ref: string }[] }>(
+    'select id, ref from site where id = any (:siteIds)',
+    { siteIds: [...siteIds] },
+  );
+  return rows;
+}

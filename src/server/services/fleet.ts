@@ -2,8 +2,12 @@ import type { FleetNow, SinceLastLook } from '../../schemas/api/fleet';
 import type { ShutdownNow } from '../../schemas/api/shutdown';
 import type { Tx } from '../db/transaction';
 import { acknowledgementsOf, contactsOf, missedSince, noteLook } from '../queries/fleet';
-import { sitesNow } from '../queries/sites-now';
+import { sitesForShutdown, sitesNow } from '../queries/sites-now';
 import { causesNow } from './causes';
+
+const sitesOf = (causes: readonly { siteId: string }[]): string[] => [
+  ...new Set(causes.map((c) => c.siteId)),
+];
 
 /** Every site that the actor sees, as it stands, with what to act on. A fixed number of statements. */
 export async function readFleet(tx: Tx, at: Date): Promise<FleetNow> {
@@ -13,18 +17,26 @@ export async function readFleet(tx: Tx, at: Date): Promise<FleetNow> {
     at: at.toISOString(),
     sites,
     causes,
-    contacts: await contactsOf(tx),
+    contacts: await contactsOf(tx, sitesOf(causes)),
     acknowledgements: await acknowledgementsOf(tx, causes),
   };
 }
 
 /** The part of the fleet that shutdown is about: sites with a cause, or with something other than a release in force. */
 export async function readShutdown(tx: Tx, at: Date): Promise<ShutdownNow> {
-  const fleet = await readFleet(tx, at);
-  const concerned = new Set(fleet.causes.map((c) => c.siteId));
-  const sites = fleet.sites.filter((s) => concerned.has(s.id) || s.commands.length > 0);
-  const shown = new Set(sites.map((s) => s.id));
-  return { ...fleet, sites, contacts: fleet.contacts.filter((c) => shown.has(c.siteId)) };
+  const causes = await causesNow(tx, at);
+  const concerned = sitesOf(causes);
+  const sites = await sitesNow(tx, at, await sitesForShutdown(tx, concerned));
+  return {
+    at: at.toISOString(),
+    sites,
+    causes,
+    contacts: await contactsOf(
+      tx,
+      sites.map((s) => s.id),
+    ),
+    acknowledgements: await acknowledgementsOf(tx, causes),
+  };
 }
 
 /** So many lines fit before the causes without pushing them off a laptop's screen. */

@@ -2,9 +2,10 @@ import { priceOn } from '../../domain/output/tariff';
 import { localDay } from '../../drawings/times';
 import type { LowOutput, LowString } from '../../schemas/api/low-output-rows';
 import type { Tx } from '../db/transaction';
-import { figuresSites, tariffsOf } from '../queries/figures';
+import { currencyOf } from '../queries/causes-list';
+import { tariffsByRef } from '../queries/figures';
 import { openCasesByString } from '../queries/low-output';
-import { judgedStrings, type JudgedString } from '../queries/output-days';
+import { judgedCounts, lowOutputStrings, unjudgedSites, type JudgedString } from '../queries/output-days';
 
 /** A string whose newest judged day is older says nothing of now. */
 const JUDGED_WITHIN_MS = 14 * 86_400_000;
@@ -40,31 +41,22 @@ function rowOf(s: JudgedString, price: number | null, openCase: LowString['openC
 
 /** The strings that are low now over every site of the actor, with what each is worth and what is done about it. */
 export async function readLowOutput(tx: Tx, at: Date): Promise<LowOutput> {
-  const sites = await figuresSites(tx, at);
-  const judged = await judgedStrings(tx, {
-    onlyLow: false,
-    judgedSince: new Date(at.getTime() - JUDGED_WITHIN_MS).toISOString().slice(0, 10),
-  });
-  const low = judged.filter((s) => s.outcome === 'low');
-  const siteIds = new Map(sites.map((s) => [s.ref, s.id]));
-  const tariffs = await tariffsOf(tx, [...siteIds.values()]);
+  const judgedSince = new Date(at.getTime() - JUDGED_WITHIN_MS).toISOString().slice(0, 10);
+  const low = await lowOutputStrings(tx, { judgedSince });
+  const { judged, cantTell } = await judgedCounts(tx, judgedSince);
+  const tariffs = await tariffsByRef(tx, [...new Set(low.map((s) => s.siteRef))]);
   const cases = await openCasesByString(
     tx,
     low.map((s) => s.stringRef),
   );
-  const told = new Set(judged.map((s) => s.siteRef));
   return {
     at: at.toISOString(),
-    currency: sites[0]?.currency ?? null,
+    currency: await currencyOf(tx),
     rows: low.map((s) =>
-      rowOf(
-        s,
-        priceOn(s.day, tariffs.get(siteIds.get(s.siteRef) ?? -1) ?? []),
-        cases.get(s.stringRef) ?? null,
-      ),
+      rowOf(s, priceOn(s.day, tariffs.get(s.siteRef) ?? []), cases.get(s.stringRef) ?? null),
     ),
-    judged: judged.length,
-    cantTell: judged.filter((s) => s.outcome === 'cant_tell').length,
-    unjudgedSites: sites.filter((s) => s.stage === 'operating' && !told.has(s.ref)).map((s) => s.name),
+    judged,
+    cantTell,
+    unjudgedSites: await unjudgedSites(tx, judgedSince),
   };
 }

@@ -1,0 +1,23 @@
+import { number } from '../../drawings/numbers';
+import { Button } from './Button';
+
+interface Props {
+  /** Entries shown, of so many; nothing stands here once all are. */
+  shown: number;
+  of: number;
+  /** What they are: "sites". */
+  what: string;
+  onMore: () => void;
+}
+
+/** Under a list that begins with its first entries. */
+export function ShowMore({ shown, of, what, onMore }: Props) {
+  if (shown >= of) return null;
+  return (
+    <p className="no-print mt-3">
+      <Button onClick={onMore}>
+        Show more {what} ({number(shown)} of {number(of)} shown)
+      </Button>
+    </p>
+  );
+}
