@@ -9,7 +9,6 @@ import { Sheet } from '../../components/ui/Sheet';
 import { ShowMore } from '../../components/ui/ShowMore';
 import { useNow } from '../../components/ui/Time';
 import { useReaderZone } from '../../components/ui/reader-zone';
-import { number } from '../../drawings/numbers';
 import { useLive } from '../../lib/live-hook';
 import { queryClient } from '../../lib/query-client';
 import { useViewInUrl } from '../../lib/view-in-url';
