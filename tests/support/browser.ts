@@ -5,6 +5,7 @@ import {
   type BrowserContextOptions,
   type Page,
 } from 'playwright-core';
+import { chromiumAt } from '../../src/server/up/programs.mjs';
 import { PASSWORD } from './fleet';
 import { signInAt } from './server';
 
@@ -21,7 +22,7 @@ const FLAGS = [
 /** Debian's Chromium, without a window; `more` flags where a test needs a camera, say. The caller closes it. */
 export const startBrowser = (more: readonly string[] = []): Promise<Browser> =>
   chromium.launch({
-    executablePath: process.env.WAKELINE_CHROMIUM ?? '/usr/bin/chromium',
+    executablePath: chromiumAt(),
     headless: true,
     args: [...FLAGS, ...more],
   });

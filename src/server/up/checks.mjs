@@ -128,9 +128,12 @@ async function vitest(projects) {
   }
 }
 
-/** Runs sources and tests side by side: the tests mostly wait, for plants and browsers, and come first where they do not. */
-async function sum(projects, atTheDesk) {
-  const parts = await Promise.all([staticChecks(atTheDesk), vitest(projects)]);
+/**
+ * Runs sources and tests side by side: the tests mostly wait, for plants and browsers, and come first where they do not.
+ * `ready`: programs that the tests need; the sources are read meanwhile.
+ */
+async function sum(projects, atTheDesk, ready = Promise.resolve()) {
+  const parts = await Promise.all([staticChecks(atTheDesk), ready.then(() => vitest(projects))]);
   const total = { passed: 0, failed: 0 };
   for (const { passed, failed } of parts.flat()) {
     total.passed += passed;
@@ -141,12 +144,14 @@ async function sum(projects, atTheDesk) {
 }
 
 /** Types and every test. The last line is `N passed, N failed`. */
-export async function test() {
+export const test = () => sum([], false, ensurePrograms());
+
+/** One after the other: two at a time would wait for Debian's lock. */
+async function ensurePrograms() {
   if (!process.env.DATABASE_URL) await ensurePostgres();
   await ensureChromium();
   await ensureNginx();
   await ensurePgbouncer();
-  return sum([], false);
 }
 
 /** The quick half, for the desk: no database, no browser. */
