@@ -156,7 +156,7 @@ export async function missedSince(
                               then jsonb_array_length(e.detail -> 'positions') end), 0)::int as units,
             max(e.at) as "newestAt", (count(*) over ())::int as total
      from event e join site on site.id = e.site_id
-     where ${SITE_VISIBLE} and e.recorded_at > :since
+     where ${SITE_VISIBLE} and e.organisation_id = (select actor_organisation()) and e.recorded_at > :since
        and e.at > greatest(:since::timestamptz - make_interval(days => ${NEWS_DAYS}), now() - make_interval(days => 400))
        and e.kind = any (:kinds)
      group by site.id, e.kind
