@@ -6,12 +6,15 @@ import { cookieName, signedInBy } from './server/auth/sessions';
 import { config } from './server/config';
 import { AppError } from './server/errors';
 import { answerHeaders } from './server/http/headers';
+import { inTime } from './server/http/in-time';
 import { sameOrigin } from './server/http/origin';
 import { justWrittenCookie } from './server/http/just-written';
 import { asReader } from './server/http/reader';
 import { problem } from './server/http/problem';
 import { currentRequest, inRequest } from './server/request';
 
+/** Who somebody is takes a database milliseconds; without an answer the page says that there is none. */
+const SIGNED_IN_WITHIN_MS = 12_000;
 const SAFE = new Set(['GET', 'HEAD', 'OPTIONS']);
 /** Addresses that are secrets and only read: the router would write one into its log that is asked for otherwise. */
 const SECRET_AND_READ = /^\/(api\/)?shared\//;
@@ -65,7 +68,7 @@ async function answer(context: APIContext, next: MiddlewareNext): Promise<Respon
   let cookies: string[] = [];
   let units: TemperatureUnit = 'metric';
   try {
-    const found = await signedInBy(request.headers.get('cookie') ?? '');
+    const found = await inTime(SIGNED_IN_WITHIN_MS, signedInBy(request.headers.get('cookie') ?? ''));
     cookies = found.cookies;
     if ('actor' in found) {
       units = found.viewer.units;

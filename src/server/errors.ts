@@ -38,16 +38,25 @@ export class AppError extends Error {
   }
 }
 
-/** PostgreSQL out of reach, shutting down or out of connections: worth a later try, and no fault of the request. */
+/**
+ * PostgreSQL out of reach, shutting down, out of connections, room or memory, or not done in the time that was given:
+ * worth a later try, and no fault of the request.
+ */
 const AWAY = new Set([
   'ECONNREFUSED',
   'ECONNRESET',
   'EPIPE',
   'ETIMEDOUT',
+  'EHOSTUNREACH',
+  'ENETUNREACH',
   '57P01',
   '57P02',
   '57P03',
+  '53100',
+  '53200',
   '53300',
+  '55P03',
+  '57014',
   '08006',
   '08001',
   '08003',

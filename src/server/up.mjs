@@ -1,4 +1,4 @@
-// Brings Wakeline up: `node src/server/up.mjs start|dev|test|check|bench|drill`. Needs nothing but Node and npm;
+// Brings Wakeline up: `node src/server/up.mjs start|dev|test|check|bench|drill|torture`. Needs nothing but Node and npm;
 // packages, PostgreSQL and the demo it sees to itself. The pieces are in up/.
 import process from 'node:process';
 
@@ -8,6 +8,7 @@ const MODES = {
   test: 'every check and test',
   check: 'the quick half: format, lint, types, architecture, unit tests',
   bench: 'a measurement: npm run bench -- NAME',
+  torture: 'load, and everything that happens to installations, for ten minutes',
   drill: 'backs the installation up, restores it beside itself, compares',
 };
 
@@ -24,7 +25,7 @@ if (!fits(process.versions.node)) {
   );
   process.exitCode = 1;
 } else if (!Object.hasOwn(MODES, mode)) {
-  const list = Object.entries(MODES).map(([name, what]) => `  ${name.padEnd(6)} ${what}`);
+  const list = Object.entries(MODES).map(([name, what]) => `  ${name.padEnd(7)} ${what}`);
   process.stderr.write(`Say what to bring up:\n${list.join('\n')}\n`);
   process.exitCode = 2;
 } else {

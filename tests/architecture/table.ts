@@ -204,6 +204,7 @@ export const TABLE: readonly Row[] = [
       'architecture',
       'e2e',
       'bench',
+      'torture',
     ],
   },
 ];

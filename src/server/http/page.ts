@@ -7,7 +7,11 @@ import { AppError, ERROR_KINDS } from '../errors';
 import { log } from '../log';
 import { asOnlooker } from '../replica';
 import { hasJustWritten } from './just-written';
+import { inTime } from './in-time';
 import { explain } from './problem';
+
+/** Statements end after 30 s by themselves, unless the database stands still. */
+const READ_WITHIN_MS = 35_000;
 
 export interface Loaded<T> {
   actor: Actor;
@@ -33,7 +37,7 @@ export async function page<T>(
       throw new AppError('forbidden', { message: 'This page is for the people who look after sites.' });
     const work = (tx: Tx): Promise<T> => load({ actor, tx });
     const data = mayLag ? asOnlooker(actor, work, hasJustWritten(astro.request)) : asActor(actor, work);
-    return { actor, viewer, data: await data };
+    return { actor, viewer, data: await inTime(READ_WITHIN_MS, data) };
   } catch (error) {
     return problemPage(astro, error);
   }
@@ -46,8 +50,7 @@ export function publicPage(astro: AstroGlobal): { viewer: Viewer | null } {
 
 function problemPage(astro: AstroGlobal, error: unknown): Promise<Response> {
   const known = explain(error);
-  if (!known || ERROR_KINDS[known.kind].status > 499)
-    log.error({ error }, 'a page failed');
+  if (!known || ERROR_KINDS[known.kind].status > 499) log.error({ error }, 'a page failed');
   astro.locals.problem = {
     status: known ? ERROR_KINDS[known.kind].status : 500,
     title: known ? ERROR_KINDS[known.kind].title : 'Something failed on our side',

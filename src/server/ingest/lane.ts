@@ -13,12 +13,14 @@ export interface LaneHooks {
   written: (batch: Batch, written: Written) => Promise<void> | void;
   /** Readings left the queue. */
   relieved: (readings: number) => void;
-  /** The database does not answer; called at every try. */
+  /** The database does not answer; called at every try, and every few seconds while one takes long. */
   away: () => void;
 }
 
 const RETRY_MS = { first: 200, max: 3000 };
 const DAYS_FRESH_S = 60;
+/** A batch that is not committed by then means that the database is slow. */
+const SLOW_AFTER_MS = 5000;
 const NO_PARTITION = '23514';
 
 /** Data that the database will never take (classes 22 and 23); whatever else it says, later may be different. */
@@ -133,9 +135,14 @@ export class Lane {
       this.daysAtS = nowS;
     }
     const startedAtMs = performance.now();
-    const written = await writeBatch(this.client, batch, this.days, this.gateways, nowS);
-    meters().commit.observe((performance.now() - startedAtMs) / 1000);
-    return written;
+    // a database that stands still says nothing: loggers are told to wait all the same
+    const slow = setInterval(() => this.hooks.away(), SLOW_AFTER_MS);
+    try {
+      return await writeBatch(this.client, batch, this.days, this.gateways, nowS);
+    } finally {
+      clearInterval(slow);
+      meters().commit.observe((performance.now() - startedAtMs) / 1000);
+    }
   }
 
   private async dropClient(): Promise<void> {

@@ -114,7 +114,9 @@ export async function releaseLeases(db: Knex, process: string, loggerIds: readon
  */
 export function tellLostLoggers(db: Knex, graceS: number): Promise<number[]> {
   return db.transaction(async (tx) => {
-    const turn = await tx.raw<{ rows: { mine: boolean }[] }>('select pg_try_advisory_xact_lock(727011) as mine');
+    const turn = await tx.raw<{ rows: { mine: boolean }[] }>(
+      'select pg_try_advisory_xact_lock(727011) as mine',
+    );
     if (!turn.rows[0]?.mine) return [];
     const { rows } = await tx.raw<{ rows: { siteId: number }[] }>(
       `insert into event (at, organisation_id, site_id, kind, detail)

@@ -1,1 +1,1 @@
-export function homeOf(kind?: 'demo' | 'test' | 'bench'): string;
+export function homeOf(kind?: 'demo' | 'test' | 'bench' | 'torture'): string;

@@ -37,6 +37,7 @@ const load = {
   check: () => import('./checks.mjs').then((m) => m.check),
   drill: () => import('./drill.mjs').then((m) => m.drill),
   bench: () => import('./bench.mjs').then((m) => m.bench),
+  torture: () => import('./torture.mjs').then((m) => m.torture),
 };
 
 /** Under npm a killed npm leaves us orphaned: then there is nobody to press Ctrl-C any more. */
