@@ -57,6 +57,7 @@ export const historyModel = {
 };
 
 export const heatSheet = {
+  imported: ', from imported readings: nothing was reported then',
   voltage: 'Voltage',
   current: 'Current',
   temperature: 'Temperature',

@@ -15,6 +15,7 @@ import { subjectsOf } from '../../src/server/queries/history-import';
 import { importedDays, importedSiteDays, importedSteps } from '../../src/server/queries/history-readings';
 import { siteFigures } from '../../src/server/services/figures';
 import { readHistory } from '../../src/server/services/string-history';
+import { readHeat, readUnits } from '../../src/server/services/string-units';
 import { strangerIn } from '../support/as-built';
 import { testDatabase, type TestDatabase } from '../support/database';
 import { ask } from '../support/endpoint';
@@ -227,6 +228,34 @@ describe('an import', () => {
     );
     const days = await asActor(analyst, (tx) => importedSiteDays(tx, [site.id], '2024-08-01', '2024-08-31'));
     expect(days.map((d) => d.day)).toEqual(['2024-08-02']);
+  });
+
+  it('of single units stands where a string’s units are shown and nothing was reported', async () => {
+    const name = names()[2]!;
+    const rows = [1, 2].flatMap((position) =>
+      [40, 41, 42].map(
+        (q) =>
+          `2024-09-03 ${two(Math.floor(q / 4))}:${two((q % 4) * 15)};${name};${position};${38 + position},5;9,0`,
+      ),
+    );
+    const { made } = await send(`Time;String;Position;Voltage (V);Current (A)\n${rows.join('\n')}\n`);
+    expect(made?.readings).toBe(6);
+    const ref = site.strings.get(name)!.ref;
+    const query = { on: '2024-09-03', range: 'day', quantity: 'voltage' } as const;
+    const units = await asActor(analyst, (tx) => readUnits(tx, ref, query, new Date()));
+    expect([units.imported, units.resolution, units.at.length]).toEqual([true, 'quarter', 3]);
+    expect(units.lines.slice(0, 3).map((l) => l.values)).toEqual([
+      [39.5, 39.5, 39.5],
+      [40.5, 40.5, 40.5],
+      [null, null, null],
+    ]);
+    const heat = await asActor(analyst, (tx) => readHeat(tx, ref, query, new Date()));
+    expect([heat.imported, heat.stepS, heat.at]).toEqual([true, 900, units.at]);
+    expect(heat.rows[1]?.values).toEqual([40.5, 40.5, 40.5]);
+    const other = await asActor(analyst, (tx) =>
+      readUnits(tx, ref, { ...query, on: '2024-09-05' }, new Date()),
+    );
+    expect([other.imported, other.at]).toEqual([false, []]);
   });
 
   it('is nobody else’s: not the technician’s to make, not another organisation’s to see', async () => {

@@ -95,6 +95,7 @@ export default function HeatSheet({ page, view, onView, moment, onChoose }: Prop
           <p className="mb-2 text-sm text-ink-2">
             {heatSheet.positionsDownwardMeansOf(heat.data.from, heat.data.timeZone, heat.data.stepS)}
             {heat.data.side === 'module' && heat.data.quantity === 'voltage' && heatSheet.moduleSide}
+            {heat.data.imported && heatSheet.imported}
             {heatSheet.aTapShowsThe}
           </p>
           {model.at.length === 0 ? (

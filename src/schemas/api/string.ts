@@ -150,6 +150,8 @@ export const stringUnits = z.object({
   side: z.enum(['output', 'module']), // where a voltage is measured
   range: z.enum(UNIT_RANGES),
   resolution: z.enum(['minute', 'quarter']),
+  /** Nothing was reported in this time: these come from an import. */
+  imported: z.boolean(),
   from: z.number(),
   to: z.number(),
   timeZone: z.string(),

@@ -84,6 +84,8 @@ export const stringHeat = z.object({
   from: z.number(),
   to: z.number(),
   stepS: z.number(),
+  /** Nothing was reported on this day: these come from an import. */
+  imported: z.boolean(),
   /** Epoch s at which steps begin; steps without any report are left out. */
   at: z.array(z.number()),
   rows: z.array(z.object({ position: z.int(), serial: z.string().nullable(), values: series })),

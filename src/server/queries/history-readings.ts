@@ -115,21 +115,28 @@ export function whereNothingElse(
   return { points, stretches };
 }
 
-/** One quantity of every unit of a string, where an import tells of single units; arrays in slot order. */
+/**
+ * One quantity of every unit of a string, where an import tells of single units: means over steps of `stepS` seconds,
+ * by their beginning; arrays in slot order.
+ */
 export async function importedUnits(
   tx: Tx,
   stringId: number,
   window: { from: Date; to: Date },
   quantity: ImportedQuantity | 'temperature',
+  stepS: number,
   slots: number,
 ): Promise<{ at: number; values: (number | null)[] }[]> {
   const value = quantity === 'temperature' ? 'r.temperature' : VALUES[quantity];
   const { rows } = await tx.raw<{ rows: { at: number; position: number; value: number | null }[] }>(
-    `select distinct on (r.at, s.position) extract(epoch from r.at)::float8 as at, s.position, (${value})::float8 as value
-     from history_series s join history_reading r on r.series_id = s.id
-     where s.string_id = :stringId and s.position is not null and r.at >= :from and r.at < :to
-     order by r.at, s.position, s.id desc`,
-    { stringId, ...window },
+    `select distinct on (step, position) extract(epoch from step)::float8 as at, position, value
+     from (select date_bin(make_interval(secs => :stepS), r.at, timestamptz '2000-01-01 00:00Z') as step, s.position,
+                  s.id as series, avg(${value})::float8 as value
+           from history_series s join history_reading r on r.series_id = s.id
+           where s.string_id = :stringId and s.position between 1 and :slots and r.at >= :from and r.at < :to
+           group by 1, 2, 3) x
+     order by step, position, series desc`,
+    { stringId, stepS, slots, ...window },
   );
   const out: { at: number; values: (number | null)[] }[] = [];
   for (const { at, position, value: v } of rows) {

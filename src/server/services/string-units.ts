@@ -2,6 +2,7 @@ import type { StringUnits, UnitQuantity, UnitsQuery } from '../../schemas/api/st
 import type { StringHeat } from '../../schemas/api/workbench';
 import { localDay } from '../../drawings/times';
 import type { Tx } from '../db/transaction';
+import { importedUnits } from '../queries/history-readings';
 import { stringFacts, type StringFacts } from '../queries/string-facts';
 import { dayBounds } from '../queries/string-history';
 import { staysOf, unitMinutes, unitQuarters, unitSteps, type UnitColumn } from '../queries/string-units';
@@ -17,7 +18,7 @@ function columnOf(facts: StringFacts, quantity: UnitQuantity): UnitColumn {
 
 /**
  * One quantity of chosen units: over a day report by report (at least a minute apart), over a week or a month as means
- * of 15 minutes.
+ * of 15 minutes. Where nothing was reported in all that time, what was imported of single units.
  * @throws AppError not_found
  */
 export async function readUnits(tx: Tx, ref: string, query: UnitsQuery, now: Date): Promise<StringUnits> {
@@ -29,13 +30,20 @@ export async function readUnits(tx: Tx, ref: string, query: UnitsQuery, now: Dat
     : Array.from({ length: facts.slots }, (_, i) => i + 1);
   const column = columnOf(facts, query.quantity);
   let resolution: StringUnits['resolution'] = query.range === 'day' ? 'minute' : 'quarter';
-  let rows = resolution === 'minute' ? await unitMinutes(tx, facts.id, { from, to }, column) : [];
+  let rows: { at: number; values: (number | null)[] | null }[] =
+    resolution === 'minute' ? await unitMinutes(tx, facts.id, { from, to }, column) : [];
+  let imported = false;
   if (rows.length === 0) {
     // of a day whose reports are no longer kept the roll-up stays
     const quarters = await unitQuarters(tx, facts.id, { from, to }, column);
     if (quarters.length > 0 || resolution === 'quarter') {
       rows = quarters;
       resolution = 'quarter';
+    }
+    if (quarters.length === 0) {
+      rows = await importedUnits(tx, facts.id, { from, to }, query.quantity, 900, facts.slots);
+      imported = rows.length > 0;
+      if (imported) resolution = 'quarter';
     }
   }
   const at: number[] = [];
@@ -62,6 +70,7 @@ export async function readUnits(tx: Tx, ref: string, query: UnitsQuery, now: Dat
     side: column === 'voltageIn' ? 'module' : 'output',
     range: query.range,
     resolution,
+    imported,
     from: from.getTime() / 1000,
     to: to.getTime() / 1000,
     timeZone: facts.timeZone,
@@ -73,7 +82,8 @@ export async function readUnits(tx: Tx, ref: string, query: UnitsQuery, now: Dat
 }
 
 /**
- * One quantity of every unit over a day in steps of five minutes, or of fifteen where reports are no longer kept.
+ * One quantity of every unit over a day in steps of five minutes, or of fifteen where reports are no longer kept or the
+ * day was imported.
  * @throws AppError not_found
  */
 export async function readHeat(
@@ -98,6 +108,8 @@ export async function readHeat(
     stepS = 900;
     steps = (await unitQuarters(tx, facts.id, { from, to }, column)).map((q) => ({ ...q, at: q.at - 450 }));
   }
+  const imported = steps.length === 0;
+  if (imported) steps = await importedUnits(tx, facts.id, { from, to }, query.quantity, stepS, facts.slots);
   const stays = await staysOf(tx, facts.id, { from, to });
   return {
     quantity: query.quantity,
@@ -108,6 +120,7 @@ export async function readHeat(
     from: from.getTime() / 1000,
     to: to.getTime() / 1000,
     stepS,
+    imported: imported && steps.length > 0,
     at: steps.map((s) => s.at),
     rows: Array.from({ length: facts.slots }, (_, i) => ({
       position: i + 1,
