@@ -16,6 +16,8 @@ import { framesOf, VALUE_COLUMNS, type FrameColumn } from '../../src/server/quer
 const DAY_MS = 86_400_000;
 const RUNS = 9;
 const STRINGS = 12;
+/** Units of a string as the large fleet has them; the demo's roofs have shorter ones, too. */
+const LONG = 20;
 
 const figure = (name: string, value: number, unit: string, digits = 2) =>
   process.stdout.write(`${name} ${value.toFixed(digits)} ${unit}\n`);
@@ -111,11 +113,27 @@ figure('bytes.readings', readings, 'readings', 0);
 const hot = (await bytesOf('string_frame')) / readings;
 figure('bytes.hot_per_reading', hot, 'B');
 
+/** The same of the strings that the large fleet is made of, in a table of their own. */
+async function bytesOfLong(parent: string, where: string): Promise<number> {
+  await db.query(`create table of_long (like ${parent} including all)`);
+  await db.query(`insert into of_long select * from ${parent} where ${where}`);
+  const { n } = await one<{ n: string }>(`select pg_total_relation_size('of_long') as n`);
+  await db.query('drop table of_long');
+  return Number(n);
+}
+const { n: longReadings } = await one<{ n: string }>(
+  `select sum(cardinality(array_remove(state, null))) as n from string_frame where cardinality(state) >= ${LONG}`,
+);
+const longHot = await bytesOfLong('string_frame', `cardinality(state) >= ${LONG} order by at, string_id`);
+figure(`bytes.hot_per_reading_of_${LONG}_units`, longHot / Number(longReadings), 'B');
+
 const start = performance.now();
 const packed = await packDays(new Date(Date.now() + (config().PACKED_AFTER_DAYS + 2) * DAY_MS));
 const seconds = (performance.now() - start) / 1000;
 await db.query('vacuum packed_frame');
 figure('bytes.packed_per_reading', (await bytesOf('packed_frame')) / readings, 'B');
+const longPacked = await bytesOfLong('packed_frame', `slots >= ${LONG} order by day, string_id`);
+figure(`bytes.packed_per_reading_of_${LONG}_units`, longPacked / Number(longReadings), 'B');
 figure('bytes.pack_rate', readings / seconds, 'readings/s', 0);
 process.stderr.write(`${packed.frames} frames of ${packed.days} days packed in ${seconds.toFixed(1)} s\n`);
 for (const c of ['steps', 'mask', 'voltage_sum', 'power_sum', ...VALUE_COLUMNS]) {

@@ -72,6 +72,10 @@ try {
     figure('ingest.unit_events', got.changes, 'rows', 0);
     figure('ingest.events', got.events, 'rows', 0);
     figure('ingest.ratio_to_copy', rate / copyRate, 'ratio');
+    const { rows: sizes } = await db.query<{ bytes: string }>(
+      `select sum(pg_total_relation_size(inhrelid)) as bytes from pg_inherits where inhparent = 'string_frame'::regclass`,
+    );
+    figure('ingest.bytes_per_reading', Number(sizes[0]!.bytes) / readings, 'B', 1);
     for (const l of loggers) l.close();
     // a fleet that has run for a while has statistics: autovacuum would make them within minutes
     await db.query('analyze');
