@@ -3,7 +3,9 @@ import process from 'node:process';
 import { defineConfig } from 'astro/config';
 import react from '@astrojs/react';
 import tailwind from '@astrojs/tailwind';
+import { bundles } from './src/server/bundles.ts';
 import host from './src/server/host.ts';
+import { language } from './src/server/language.ts';
 
 export default defineConfig({
   output: 'server',
@@ -14,5 +16,9 @@ export default defineConfig({
   server: { host: process.env.HOST || '127.0.0.1', port: Number(process.env.PORT || 4321) },
   devToolbar: { enabled: false },
   // scripts are files: the browser runs no inline one but those that server/http/inline-scripts names
-  vite: { build: { assetsInlineLimit: 0 }, ssr: { noExternal: ['echarts-for-react'] } },
+  vite: {
+    plugins: [bundles(), language(process.env.WAKELINE_LANGUAGE)],
+    build: { assetsInlineLimit: 0, target: 'es2022', minify: 'terser' },
+    ssr: { noExternal: ['echarts-for-react'] },
+  },
 });

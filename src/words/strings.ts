@@ -134,6 +134,7 @@ export const unitsSheet = {
   choosePositionsAboveOr: 'Choose positions above, or tap a row of the strip below.',
   noUnitIsChosen: 'No unit is chosen',
   fetchingTheUnitsReports: 'Fetching the units’ reports …',
+  imported: 'Nothing was reported then: from imported readings. ',
   highestOf15Minutes: 'Highest of 15 minutes. ',
   meansOf15Minutes: 'Means of 15 minutes. ',
   singleUnitsAreKept: 'Single units are kept by quarters of an hour: a month is shown. ',

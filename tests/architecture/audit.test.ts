@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import { AUDIT_AREAS } from '../../src/schemas/api/audit';
-import { actionWords } from '../../src/features/audit/words';
+import { actionWords } from '../../src/words/audit-sentences';
 import { sources } from './sources';
 
 describe('what goes on record', () => {

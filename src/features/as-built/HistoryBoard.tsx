@@ -13,7 +13,7 @@ import { queryClient } from '../../lib/query-client';
 import { useViewInUrl } from '../../lib/view-in-url';
 import type { HistoryItem, HistoryPage, HistoryView, Stay } from '../../schemas/api/as-built';
 import { paths } from '../../schemas/paths';
-import { changedFields, historyTitle, sourceWords } from './history-words';
+import { changedFields, historyTitle, sourceWords } from '../../words/as-built-history-sentences';
 import { historyBoard } from '../../words/as-built-history';
 
 export const HISTORY_DEFAULTS: HistoryView = { find: '', kind: 'all', person: '', string: '' };

@@ -7,7 +7,7 @@ import { SiteTime } from '../../components/ui/Time';
 import { withQuery } from '../../lib/api';
 import { AUDIT_AREAS, type AuditItem, type AuditPage, type AuditView } from '../../schemas/api/audit';
 import { paths } from '../../schemas/paths';
-import { actionWords, AREA_WORDS, changesOf, subjectWords } from './words';
+import { actionWords, AREA_WORDS, changesOf, subjectWords } from '../../words/audit-sentences';
 import { auditList } from '../../words/audit';
 
 /** The fields of an entry that are seen at once. */

@@ -2,7 +2,7 @@ import { paths } from '../../schemas/paths';
 import type { CustomerSites } from '../../schemas/api/customer';
 import { Notice } from '../../components/ui/Notice';
 import { Sheet } from '../../components/ui/Sheet';
-import { customerWords } from './words';
+import { customerWords } from '../../words/customer-sentences';
 import { roofList } from '../../words/customer';
 
 const NO_DAY = { energy: null, clearEnergySoFar: 0 };

@@ -20,7 +20,7 @@ import {
 } from './cards';
 import { FigureSheet } from '../../components/ui/FigureSheet';
 import { TodaySheet } from './TodaySheet';
-import { customerWords } from './words';
+import { customerWords } from '../../words/customer-sentences';
 import { roofPage } from '../../words/customer';
 
 /** How often the page reads itself again. */

@@ -6,7 +6,7 @@ import { lifeCard, monthCard, yearCard } from './cards';
 import { FigureSheet } from '../../components/ui/FigureSheet';
 import { TodaySheet } from './TodaySheet';
 import { useShared } from './use-shared';
-import { customerWords } from './words';
+import { customerWords } from '../../words/customer-sentences';
 import { sharedRoof } from '../../words/shared-page';
 
 /** What is said where a link no longer works. */

@@ -7,7 +7,7 @@ import { dayHours } from './day-hours';
 import { LINK_OVER } from './SharedRoof';
 import { dayLabel } from './TodaySheet';
 import { useShared } from './use-shared';
-import { customerWords } from './words';
+import { customerWords } from '../../words/customer-sentences';
 import { sharedScreen } from '../../words/shared-page';
 
 /** A screen that runs for months takes a new build of the page twice a day. */

@@ -2,7 +2,7 @@ import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import type { SharedNow } from '../../schemas/api/share';
 import { yearCard } from './cards';
-import { customerWords } from './words';
+import { customerWords } from '../../words/customer-sentences';
 
 const AT = '2026-12-01T14:30:00.000Z';
 const CARE = { organisation: 'Lowfield Solar Works' };

@@ -13,7 +13,7 @@ import { paths } from '../../schemas/paths';
 import { FindingsTable } from './FindingsTable';
 import { InputsSheet } from './InputsSheet';
 import { DESIGN_DEFAULTS, shownFindings } from './list';
-import { designFinding, mayNotShutDown, stringsInShort } from './words';
+import { designFinding, mayNotShutDown, stringsInShort } from '../../words/design-sentences';
 import { designBoard } from '../../words/design';
 
 interface Props {

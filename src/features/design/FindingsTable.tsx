@@ -3,7 +3,7 @@ import { Table, type Column } from '../../components/ui/Table';
 import { Tag, type Tone } from '../../components/ui/Tag';
 import { number, quantity } from '../../drawings/numbers';
 import type { DesignView, SiteDesignItem } from '../../schemas/api/design';
-import { CHECK_WORDS, OUTCOME_WORDS, stringsInShort } from './words';
+import { CHECK_WORDS, OUTCOME_WORDS, stringsInShort } from '../../words/design-sentences';
 import { findingsTable } from '../../words/design';
 
 interface Props {

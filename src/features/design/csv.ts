@@ -1,5 +1,5 @@
 import type { SiteDesignItem } from '../../schemas/api/design';
-import { CHECK_WORDS, OUTCOME_WORDS } from './words';
+import { CHECK_WORDS, OUTCOME_WORDS } from '../../words/design-sentences';
 
 interface CsvColumn {
   header: string;

@@ -2,7 +2,7 @@ import { describe, expect, it } from 'vitest';
 import { DESIGN_CHECKS } from '../../domain/photovoltaics/limits/design-finding';
 import type { SiteDesign, SiteDesignItem } from '../../schemas/api/design';
 import { DESIGN_DEFAULTS, shownFindings } from './list';
-import { CHECK_WORDS, designFinding, mayNotShutDown, stringsInShort } from './words';
+import { CHECK_WORDS, designFinding, mayNotShutDown, stringsInShort } from '../../words/design-sentences';
 
 const finding = (changed: Partial<SiteDesignItem>): SiteDesignItem => ({
   key: `${changed.check ?? 'unit_current'} ${changed.outcome ?? 'within'}`,

@@ -1,6 +1,6 @@
 import { DESIGN_CHECKS } from '../../domain/photovoltaics/limits/design-finding';
 import type { DesignView, SiteDesign, SiteDesignItem } from '../../schemas/api/design';
-import { CHECK_WORDS, stringsInShort } from './words';
+import { CHECK_WORDS, stringsInShort } from '../../words/design-sentences';
 
 export const DESIGN_DEFAULTS: DesignView = { q: '', show: 'open', sort: 'gravity', order: 'down' };
 

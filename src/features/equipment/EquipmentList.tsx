@@ -13,7 +13,7 @@ import type { Catalogue, EquipmentView } from '../../schemas/api/equipment';
 import { paths } from '../../schemas/paths';
 import { EQUIPMENT_DEFAULTS, shownItems } from './list';
 import { listColumns } from './list-columns';
-import { FAMILY_LABELS, ONE, listFinding } from './words';
+import { FAMILY_LABELS, ONE, listFinding } from '../../words/equipment-sentences';
 import { equipmentListWords } from '../../words/equipment';
 
 interface Props {

@@ -10,7 +10,7 @@ import { ApiError, api } from '../../lib/api';
 import type { ImportPreview } from '../../schemas/api/equipment';
 import { paths } from '../../schemas/paths';
 import { PreviewSheet } from './PreviewSheet';
-import { FAMILY_LABELS, ONE } from './words';
+import { FAMILY_LABELS, ONE } from '../../words/equipment-sentences';
 import { importPage } from '../../words/equipment-import';
 
 const MOST_BYTES = 200_000;

@@ -9,7 +9,7 @@ import { paths } from '../../schemas/paths';
 import { CurveSheet } from './CurveSheet';
 import { FormField } from './FormField';
 import { groupsOf } from './form';
-import { FAMILY_LABELS, ONE, touches, usedWords } from './words';
+import { FAMILY_LABELS, ONE, touches, usedWords } from '../../words/equipment-sentences';
 import { useTypeForm } from './use-type-form';
 import { typePage } from '../../words/equipment';
 

@@ -6,7 +6,7 @@ import { csvColumns } from './csv';
 import { fitOf } from './fit';
 import { curveEntry, curveMissing, emptyForm, formOf, groupsOf, readForm, withField } from './form';
 import { EQUIPMENT_DEFAULTS, shownItems } from './list';
-import { listFinding, touches, usedWords } from './words';
+import { listFinding, touches, usedWords } from '../../words/equipment-sentences';
 
 const STARTER = starterEquipment();
 const item = (entry: CatalogueItem['entry'], changed: Partial<CatalogueItem> = {}): CatalogueItem => ({

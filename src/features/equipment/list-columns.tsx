@@ -6,7 +6,7 @@ import { number, power, quantity } from '../../drawings/numbers';
 import type { Catalogue, CatalogueItem } from '../../schemas/api/equipment';
 import { paths } from '../../schemas/paths';
 import { connectorNamesOf, nameOf } from './list';
-import { usedWords } from './words';
+import { usedWords } from '../../words/equipment-sentences';
 import { equipmentListColumns } from '../../words/equipment';
 
 type Row = CatalogueItem;

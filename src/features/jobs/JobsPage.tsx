@@ -10,7 +10,7 @@ import { number } from '../../drawings/numbers';
 import { api, ApiError } from '../../lib/api';
 import type { JobKindLine, JobsPage as Page, RetryBody } from '../../schemas/api/jobs';
 import { paths } from '../../schemas/paths';
-import { doneWords, isLate, jobsFinding, took } from './words';
+import { doneWords, isLate, jobsFinding, took } from '../../words/jobs-sentences';
 import { jobsPage } from '../../words/jobs';
 
 function Last({ kind, page, timeZone }: { kind: JobKindLine; page: Page; timeZone: string }) {

@@ -6,7 +6,7 @@ import { Tag } from '../../components/ui/Tag';
 import { SiteTime } from '../../components/ui/Time';
 import { number } from '../../drawings/numbers';
 import type { LoggerTokenView, LoggerView } from '../../schemas/api/loggers';
-import { stateWords } from './words';
+import { stateWords } from '../../words/loggers-sentences';
 import { loggerSheet } from '../../words/loggers';
 
 interface Props {

@@ -14,7 +14,7 @@ import { ByHttps } from './ByHttps';
 import { LoggerSheet } from './LoggerSheet';
 import { NewTokenDialog } from './NewTokenDialog';
 import { loggersQuery } from './queries';
-import { finding } from './words';
+import { finding } from '../../words/loggers-sentences';
 import { loggersBoard } from '../../words/loggers';
 
 interface Props {

@@ -8,9 +8,10 @@ import { Field } from '../../components/ui/Field';
 import { Notice } from '../../components/ui/Notice';
 import { ApiError } from '../../lib/api';
 import { queryClient } from '../../lib/query-client';
-import { OVERLAP_HOURS, type LoggerView } from '../../schemas/api/loggers';
+import type { LoggerView } from '../../schemas/api/loggers';
+import { OVERLAP_HOURS } from '../../schemas/lists-and-limits';
 import { loggersKey, makeToken } from './queries';
-import { OVERLAP_WORDS } from './words';
+import { OVERLAP_WORDS } from '../../words/loggers-sentences';
 import { newTokenDialog } from '../../words/loggers';
 
 interface Props {

@@ -22,7 +22,7 @@ import {
 } from '../../schemas/api/low-output-rows';
 import type { SavedView } from '../../schemas/api/saved-views';
 import { paths } from '../../schemas/paths';
-import { lowFinding, SIGNATURE_WORDS } from './words';
+import { lowFinding, SIGNATURE_WORDS } from '../../words/low-output-sentences';
 import { lowOutputPage } from '../../words/low-output';
 
 interface Props {

@@ -13,7 +13,7 @@ import type { ChoiceBody, ChoicesPage } from '../../schemas/api/notices';
 import { paths } from '../../schemas/paths';
 import { KindRows } from './KindRows';
 import { SiteChoice } from './SiteChoice';
-import { clockOfMinute, minuteOfClock } from './words';
+import { clockOfMinute, minuteOfClock } from '../../words/notices-sentences';
 import { choices } from '../../words/notices';
 
 interface Draft {

@@ -1,7 +1,7 @@
 import { Choice } from '../../components/ui/Choice';
 import { HOWS, type How, type NoticeKind } from '../../domain/notices/kinds';
 import type { ChoicesPage } from '../../schemas/api/notices';
-import { HOW_WORDS } from './words';
+import { HOW_WORDS } from '../../words/notices-sentences';
 import { kindRows } from '../../words/notices';
 
 interface Props {

@@ -15,7 +15,7 @@ import { useViewInUrl } from '../../lib/view-in-url';
 import type { NoticeItem, NoticesPage, NoticesView } from '../../schemas/api/notices';
 import { paths } from '../../schemas/paths';
 import { NoticeList } from './NoticeList';
-import { inOrder, NOTICES_DEFAULTS, noticesFinding, type NoticesList } from './words';
+import { inOrder, NOTICES_DEFAULTS, noticesFinding, type NoticesList } from '../../words/notices-sentences';
 import { noticesWords } from '../../words/notices';
 
 interface Props {

@@ -15,7 +15,7 @@ import { OutlinePanel } from './OutlinePanel';
 import { PlacesSheet } from './PlacesSheet';
 import { RoofCanvas, type DrawnPath } from './RoofCanvas';
 import { useRoof } from './use-roof';
-import { roofFinding } from './words';
+import { roofFinding } from '../../words/roof-sentences';
 import { roofBoard } from '../../words/roof';
 
 type Mode = 'outline' | 'strings';

@@ -8,7 +8,6 @@ import { LiveMark } from '../../components/ui/Live';
 import { NotRead } from '../../components/ui/NotRead';
 import { energy } from '../../drawings/numbers';
 import { localDay } from '../../drawings/times';
-import { TraceSheet } from '../../components/trace/TraceSheet';
 import { Sheet } from '../../components/ui/Sheet';
 import { withQuery } from '../../lib/api';
 import { useLive } from '../../lib/live-hook';
@@ -28,7 +27,7 @@ import { UnitTable } from './UnitTable';
 import { notesQuery, stringQuery } from './queries';
 import { chosenUnits, DEFAULTS, permanentAddress, unitsInAddress } from './view';
 import { WhenNear } from './WhenNear';
-import { findingOf, type Sentence } from './words';
+import { findingOf, type Sentence } from '../../words/strings-sentences';
 import { stringView } from '../../words/strings';
 
 const UnitsSheet = lazy(() => import('./UnitsSheet'));
@@ -36,6 +35,9 @@ const HeatSheet = lazy(() => import('./HeatSheet'));
 const LoopSheet = lazy(() => import('./LoopSheet'));
 const ExplanationsSheet = lazy(() => import('./ExplanationsSheet'));
 const NotesSheet = lazy(() => import('./NotesSheet'));
+const TraceSheet = lazy(async () => ({
+  default: (await import('../../components/trace/TraceSheet')).TraceSheet,
+}));
 
 interface Props {
   page: StringPage;
@@ -260,7 +262,9 @@ function Page({ page: initial, history, view: initialView }: Props) {
               </WhenNear>
             </>
           )}
-          <TraceSheet siteId={site.id} stringId={string.id} timeZone={site.timeZone} />
+          <WhenNear>
+            <TraceSheet siteId={site.id} stringId={string.id} timeZone={site.timeZone} />
+          </WhenNear>
           <UnitTable page={page} />
         </div>
       </div>

@@ -1,7 +1,7 @@
 import { listed } from '../../drawings/numbers';
 import type { StringPage } from '../../schemas/api/string';
 import type { SlotNow } from '../../schemas/api/now';
-import { modulesMissing, positionsInWords, unitsWhere, type Finding } from './words';
+import { modulesMissing, positionsInWords, unitsWhere, type Finding } from '../../words/strings-sentences';
 import { stringsAdvice } from '../../words/strings';
 
 /** What the readings say, what to do next, and the caution that stands beside it. */

@@ -4,7 +4,7 @@ import { Tag } from '../../components/ui/Tag';
 import { SiteTime } from '../../components/ui/Time';
 import { KINDS } from '../../domain/notices/kinds';
 import type { DeliveryItem } from '../../schemas/api/webhooks';
-import { stateWords } from './words';
+import { stateWords } from '../../words/webhooks-sentences';
 import { deliveryList } from '../../words/webhooks';
 
 interface Props {

@@ -15,7 +15,7 @@ import { paths } from '../../schemas/paths';
 import { DeliveryList } from './DeliveryList';
 import { SecretNotice } from './SecretNotice';
 import { WebhookForm } from './WebhookForm';
-import { webhookFinding } from './words';
+import { webhookFinding } from '../../words/webhooks-sentences';
 import { webhookBoard } from '../../words/webhooks';
 
 type Act =

@@ -16,7 +16,7 @@ import { paths } from '../../schemas/paths';
 import { SecretNotice } from './SecretNotice';
 import { VerifySheet } from './VerifySheet';
 import { WebhookForm, type WebhookDraft } from './WebhookForm';
-import { webhooksFinding } from './words';
+import { webhooksFinding } from '../../words/webhooks-sentences';
 import { webhooksWords } from '../../words/webhooks';
 
 const KEY = ['webhooks'];

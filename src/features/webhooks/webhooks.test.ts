@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import type { WebhookItem } from '../../schemas/api/webhooks';
-import { stateWords, webhookFinding, webhooksFinding } from './words';
+import { stateWords, webhookFinding, webhooksFinding } from '../../words/webhooks-sentences';
 
 const AT = '2026-12-01T12:00:00.000Z';
 const hook = (more: Partial<WebhookItem> = {}): WebhookItem => ({

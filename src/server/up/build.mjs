@@ -32,7 +32,7 @@ export function sourcesHash() {
     else hash.update(`${relative}\0`).update(fs.readFileSync(full)).update('\0');
   };
   INPUTS.forEach(add);
-  return hash.update(process.version).digest('hex');
+  return hash.update(`${process.version}\0${process.env.WAKELINE_LANGUAGE || 'en'}`).digest('hex');
 }
 
 const madeFrom = () => {

@@ -1,4 +1,4 @@
-import { changeText, historyTitle, sourceWords } from '../../../../../features/as-built/history-words';
+import { changeText, historyTitle, sourceWords } from '../../../../../words/as-built-history-sentences';
 import { historyView } from '../../../../../schemas/api/as-built';
 import { siteParams } from '../../../../../schemas/api/site';
 import { endpoint } from '../../../../../server/http/endpoint';

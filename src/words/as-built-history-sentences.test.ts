@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest';
-import type { HistoryItem } from '../../schemas/api/as-built';
-import { changedFields, changeText, historyTitle, sourceWords } from './history-words';
+import type { HistoryItem } from '../schemas/api/as-built';
+import { changedFields, changeText, historyTitle, sourceWords } from './as-built-history-sentences';
 
 const item = (action: string, some: Partial<HistoryItem> = {}): HistoryItem => ({
   id: 1,

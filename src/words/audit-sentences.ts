@@ -1,4 +1,4 @@
-import type { AUDIT_AREAS, AuditItem } from '../../schemas/api/audit';
+import type { AUDIT_AREAS, AuditItem } from '../schemas/api/audit';
 
 export const AREA_WORDS: Record<(typeof AUDIT_AREAS)[number], string> = {
   people: 'people',

@@ -1,5 +1,5 @@
-import { fieldOf, PART_KINDS, PART_WORDS, type PartKind } from '../../domain/commissioning/as-built/parts';
-import type { HistoryItem } from '../../schemas/api/as-built';
+import { fieldOf, PART_KINDS, PART_WORDS, type PartKind } from '../domain/commissioning/as-built/parts';
+import type { HistoryItem } from '../schemas/api/as-built';
 
 /** What an entry of the history says, in words. */
 

@@ -1,7 +1,7 @@
 import { describe, expect, it } from 'vitest';
-import { lowOutputView } from '../../schemas/api/low-output';
-import { lowRows, type LowOutput, type LowString } from '../../schemas/api/low-output-rows';
-import { lowFinding } from './words';
+import { lowOutputView } from '../schemas/api/low-output';
+import { lowRows, type LowOutput, type LowString } from '../schemas/api/low-output-rows';
+import { lowFinding } from './low-output-sentences';
 
 const row = (name: string, more: Partial<LowString> = {}): LowString => ({
   site: { id: '00000000-0000-4000-8000-000000000001', name: 'Mill', timeZone: 'UTC' },

@@ -1,7 +1,7 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import type { NoticeItem } from '../../schemas/api/notices';
-import { clockOfMinute, inOrder, minuteOfClock, noticesFinding } from './words';
+import type { NoticeItem } from '../schemas/api/notices';
+import { clockOfMinute, inOrder, minuteOfClock, noticesFinding } from './notices-sentences';
 
 describe('a time of day', () => {
   it('is read as it is written', () => {

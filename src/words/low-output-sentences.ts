@@ -1,5 +1,5 @@
-import { countAtStart, counted, energy, listed, money } from '../../drawings/numbers';
-import type { LowOutput, LowString } from '../../schemas/api/low-output-rows';
+import { countAtStart, counted, energy, listed, money } from '../drawings/numbers';
+import type { LowOutput, LowString } from '../schemas/api/low-output-rows';
 
 export const SIGNATURE_WORDS: Record<LowString['signature'], string> = {
   units_missing: 'Whole modules missing',

@@ -1,5 +1,5 @@
-import { counted } from '../../drawings/numbers';
-import type { DeliveryItem, WebhookItem, WebhooksPage } from '../../schemas/api/webhooks';
+import { counted } from '../drawings/numbers';
+import type { DeliveryItem, WebhookItem, WebhooksPage } from '../schemas/api/webhooks';
 
 export interface Words {
   finding: string;

@@ -1,7 +1,7 @@
-import { counted, energy, number, percent, power } from '../../drawings/numbers';
-import { clockOrDate } from '../../drawings/times';
-import type { CustomerSite } from '../../schemas/api/customer';
-import type { SharedNow } from '../../schemas/api/share';
+import { counted, energy, number, percent, power } from '../drawings/numbers';
+import { clockOrDate } from '../drawings/times';
+import type { CustomerSite } from '../schemas/api/customer';
+import type { SharedNow } from '../schemas/api/share';
 
 /**
  * Sentences for the owner of a roof, who is not of the trade. Each is built from what is known and says nothing

@@ -1,6 +1,6 @@
-import { ago, duration } from '../../drawings/times';
-import { counted } from '../../drawings/numbers';
-import type { LoggersPage, LoggerTokenView, LoggerView } from '../../schemas/api/loggers';
+import { ago, duration } from '../drawings/times';
+import { counted } from '../drawings/numbers';
+import type { LoggersPage, LoggerTokenView, LoggerView } from '../schemas/api/loggers';
 
 const inForce = (logger: LoggerView): number => logger.tokens.filter((t) => t.state !== 'ended').length;
 

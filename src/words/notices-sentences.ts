@@ -1,6 +1,6 @@
-import { counted } from '../../drawings/numbers';
-import type { How } from '../../domain/notices/kinds';
-import type { NoticeItem, NoticesPage, NoticesView } from '../../schemas/api/notices';
+import { counted } from '../drawings/numbers';
+import type { How } from '../domain/notices/kinds';
+import type { NoticeItem, NoticesPage, NoticesView } from '../schemas/api/notices';
 
 export const NOTICES_DEFAULTS = { q: '', show: 'all', kind: 'all', site: '' } as const;
 export type NoticesList = Omit<NoticesView, 'before'>;

@@ -1,6 +1,6 @@
-import type { EquipmentFamily } from '../../domain/equipment/families';
-import { counted, countAtStart } from '../../drawings/numbers';
-import type { Catalogue, CatalogueItem } from '../../schemas/api/equipment';
+import type { EquipmentFamily } from '../domain/equipment/families';
+import { counted, countAtStart } from '../drawings/numbers';
+import type { Catalogue, CatalogueItem } from '../schemas/api/equipment';
 
 export const FAMILY_LABELS: Record<EquipmentFamily, string> = {
   modules: 'Modules',

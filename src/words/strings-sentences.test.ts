@@ -1,8 +1,8 @@
 import { describe, expect, it } from 'vitest';
-import type { SlotNow, StringNow } from '../../schemas/api/now';
-import { cautionOf, nextSteps, readingsOf } from './advice';
-import type { StringPage } from '../../schemas/api/string';
-import { findingOf, modulesMissing, type Finding, type Sentence } from './words';
+import type { SlotNow, StringNow } from '../schemas/api/now';
+import { cautionOf, nextSteps, readingsOf } from '../features/strings/advice';
+import type { StringPage } from '../schemas/api/string';
+import { findingOf, modulesMissing, type Finding, type Sentence } from './strings-sentences';
 
 const NOW = '2026-06-03T12:02:31.000Z';
 const WHEN = { now: NOW, timeZone: 'UTC' };

@@ -1,4 +1,4 @@
-import type { RoofPlan } from '../../schemas/api/roof';
+import type { RoofPlan } from '../schemas/api/roof';
 
 /** What the roof plan has to say. */
 export function roofFinding(

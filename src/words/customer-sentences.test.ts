@@ -1,8 +1,8 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import type { CommandNow } from '../../schemas/api/now';
-import type { CustomerNow } from '../../schemas/api/customer';
-import { customerWords } from './words';
+import type { CommandNow } from '../schemas/api/now';
+import type { CustomerNow } from '../schemas/api/customer';
+import { customerWords } from './customer-sentences';
 
 const AT = '2026-12-01T14:30:00.000Z';
 const CARE = { organisation: 'Lowfield Solar Works' };

@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { actionWords, changesOf, subjectWords } from './words';
+import { actionWords, changesOf, subjectWords } from './audit-sentences';
 
 describe('an entry in words', () => {
   it('says what was done, also where it has no words yet', () => {

@@ -1,6 +1,6 @@
-import type { DesignCheck, DesignOutcome } from '../../domain/photovoltaics/limits/design-finding';
-import { countAtStart, counted } from '../../drawings/numbers';
-import type { SiteDesign, SiteDesignItem } from '../../schemas/api/design';
+import type { DesignCheck, DesignOutcome } from '../domain/photovoltaics/limits/design-finding';
+import { countAtStart, counted } from '../drawings/numbers';
+import type { SiteDesign, SiteDesignItem } from '../schemas/api/design';
 
 export const CHECK_WORDS: Record<DesignCheck, string> = {
   string_voltage_inverter: 'Coldest-day voltage, inverter',

@@ -1,7 +1,7 @@
-import { countAtStart, counted, listed, number, quantity, volts } from '../../drawings/numbers';
-import { clockOrDate } from '../../drawings/times';
-import { commandWords } from '../../domain/verdicts/event-words';
-import type { SlotNow, StringNow } from '../../schemas/api/now';
+import { countAtStart, counted, listed, number, quantity, volts } from '../drawings/numbers';
+import { clockOrDate } from '../drawings/times';
+import { commandWords } from '../domain/verdicts/event-words';
+import type { SlotNow, StringNow } from '../schemas/api/now';
 
 /** The heading of a string's page and the sentence under it. A figure that carries the sentence is strong. */
 export type Sentence = (string | { strong: string })[];

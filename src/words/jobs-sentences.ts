@@ -1,5 +1,5 @@
-import { counted, countAtStart } from '../../drawings/numbers';
-import type { JobKindLine, JobsPage } from '../../schemas/api/jobs';
+import { counted, countAtStart } from '../drawings/numbers';
+import type { JobKindLine, JobsPage } from '../schemas/api/jobs';
 
 /** "0.4 s", "2 min". */
 export function took(ms: number | null): string {
