@@ -176,7 +176,7 @@ export async function up(knex: Knex): Promise<void> {
   if (!rows[0]?.roles_made) return;
   await knex.raw(`
     alter table packed_frame enable row level security;
-    create policy packed_frame_app on packed_frame to wakeline_app using (${VISIBLE}) with check (false);
+    create policy packed_frame_app on packed_frame to wakeline_app using (${VISIBLE}) with check (${VISIBLE});
     create policy packed_frame_ingest on packed_frame to wakeline_ingest using (true) with check (true);
     grant select on packed_frame to wakeline_app, wakeline_ingest;
     grant insert, update, delete on packed_frame to wakeline_ingest;

@@ -143,7 +143,8 @@ describe('the web account', () => {
     asActor(here.organisation, '*', (query) => query(sql, values));
 
   it.each([
-    ...['string_frame', 'input_frame', 'inverter_frame', 'weather_frame', 'string_quarter', 'string_state'],
+    ...['string_frame', 'packed_frame', 'input_frame', 'inverter_frame', 'weather_frame', 'string_quarter'],
+    'string_state',
     ...[
       'input_state',
       'inverter_state',
