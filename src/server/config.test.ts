@@ -47,6 +47,15 @@ describe('the environment', () => {
     expect(() => parseConfig({ DATABASE_URL: URL, HSTS_MAX_AGE_S: 'a year' })).toThrow(/HSTS_MAX_AGE_S/);
   });
 
+  it('wants accounts where a pooler stands in front, for it passes no roles on', () => {
+    const pooler = { DATABASE_URL: URL, DATABASE_POOLER_URL: 'postgres://127.0.0.1:6432' };
+    expect(() => parseConfig(pooler)).toThrow(/2 faults[\s\S]*DATABASE_URL_APP[\s\S]*DATABASE_URL_INGEST/);
+    expect(() => parseConfig({ ...pooler, DATABASE_URL_APP: URL, DATABASE_URL_INGEST: URL })).not.toThrow();
+    expect(() => parseConfig({ ...pooler, DATABASE_ONE_ROLE: '1' })).not.toThrow();
+    expect(parseConfig({ DATABASE_URL: URL }).DATABASE_REPLICA_LAG_S).toBe(10);
+    expect(() => parseConfig({ DATABASE_URL: URL, DATABASE_REPLICA_URL: '127.0.0.1' })).toThrow(/postgres:/);
+  });
+
   it('takes an empty value as not given', () => {
     expect(parseConfig({ DATABASE_URL: URL, PORT: '' }).PORT).toBe(4321);
     expect(() => parseConfig({ DATABASE_URL: '' })).toThrow(/DATABASE_URL/);
