@@ -66,7 +66,7 @@ export function isDatabaseAway(error: unknown): boolean {
   const code = (error as { code?: unknown }).code;
   return (
     (typeof code === 'string' && AWAY.has(code)) ||
-    /Connection terminated|is not queryable|Timeout acquiring a connection|timeout exceeded when trying to connect/.test(
+    /Connection terminated|is not queryable|Timeout acquiring a connection|timeout exceeded when trying to connect|^timeout expired$/.test(
       error.message,
     ) ||
     // a pooler has one code for all that befalls it

@@ -11,6 +11,7 @@ export class SiteProcess {
   fellOver = 0;
   startsInVain = 0;
   private listens = false;
+  private newest: string[] = [];
   private killed = false;
 
   constructor(
@@ -18,6 +19,7 @@ export class SiteProcess {
     readonly port: number,
     private readonly env: Record<string, string>,
     private readonly hear: (line: string) => void,
+    private readonly tell: (text: string) => void,
   ) {}
 
   get pid(): number {
@@ -41,7 +43,7 @@ export class SiteProcess {
     this.child = child;
     for (const stream of [child.stdout, child.stderr])
       stream?.on('data', (text: Buffer) => {
-        for (const line of text.toString().split('\n')) if (line) this.hear(`${this.name}: ${line}`);
+        for (const line of text.toString().split('\n')) if (line) this.heard(line);
       });
     this.ended = new Promise((resolve) => child.once('exit', () => resolve()));
     this.listens = false;
@@ -57,11 +59,18 @@ export class SiteProcess {
 
   private async again(): Promise<void> {
     if (this.stopping) return;
-    if (!this.killed && this.listens) this.fellOver++;
-    else if (!this.killed) this.startsInVain++;
+    if (!this.killed && this.listens) {
+      this.fellOver++;
+      for (const line of this.newest) this.tell(`${this.name} fell over: ${line.slice(0, 600)}`);
+    } else if (!this.killed) this.startsInVain++;
     this.killed = false;
     await sleep(1000);
     if (!this.stopping) await this.start();
+  }
+
+  private heard(line: string): void {
+    this.newest = [...this.newest.slice(-11), line];
+    this.hear(`${this.name}: ${line}`);
   }
 
   kill(): void {

@@ -1,4 +1,5 @@
 import { EventEmitter } from 'node:events';
+import { setTimeout as sleep } from 'node:timers/promises';
 import { parseCronItems, run, runMigrations, type Runner, type WorkerEvents } from 'graphile-worker';
 import { config } from '../config';
 import { Listener } from '../live/listener';
@@ -21,12 +22,32 @@ interface Working {
   listener: Listener;
   telling: TellWatch;
 }
+interface State {
+  /** Whether jobs are to be done here: a worker that ends meanwhile begins again. */
+  wanted: boolean;
+  working?: Working | undefined;
+}
 // one per process, also when a development server reloads this module
 const KEY = Symbol.for('wakeline.worker');
-const shared = globalThis as unknown as Record<symbol, Working | undefined>;
+const shared = globalThis as unknown as Record<symbol, State | undefined>;
+const state: State = (shared[KEY] ??= { wanted: false });
+
+/** Between two tries to begin again, ms. */
+const AGAIN_AFTER_MS = 3000;
 
 export async function startWorker(): Promise<void> {
-  if (shared[KEY]) return;
+  if (state.wanted) return;
+  state.wanted = true;
+  try {
+    state.working = await begin();
+  } catch (error) {
+    state.wanted = false;
+    throw error;
+  }
+  void keepWorking(state.working);
+}
+
+async function begin(): Promise<Working> {
   const connectionString = config().DATABASE_URL;
   await runMigrations({ connectionString, logger });
   await keepDays(new Date());
@@ -58,7 +79,42 @@ export async function startWorker(): Promise<void> {
   await listener.start();
   const telling = new TellWatch();
   await telling.start();
-  shared[KEY] = { runner, life, listener, telling };
+  return { runner, life, listener, telling };
+}
+
+async function end({ runner, life, listener, telling }: Working): Promise<void> {
+  await listener.stop();
+  await telling.stop();
+  // one that gave up by itself says that it has ended already
+  await runner.stop().catch((error: unknown) => log.debug({ error }, 'the worker had ended'));
+  await life.stop();
+}
+
+/** The library gives up for good where its database is gone for a moment: then the worker begins again. */
+async function keepWorking(first: Working): Promise<void> {
+  let working = first;
+  for (;;) {
+    await working.runner.promise.catch(() => undefined); // why is in the library's own words in the log
+    if (state.working !== working) return; // told to end
+    log.warn('the worker ended without being told to; it begins again');
+    state.working = undefined;
+    await end(working);
+    for (;;) {
+      await sleep(AGAIN_AFTER_MS);
+      if (!state.wanted) return;
+      try {
+        working = await begin();
+        break;
+      } catch (error) {
+        log.warn(
+          { error: error instanceof Error ? error.message : String(error) },
+          'the worker can’t begin again yet',
+        );
+      }
+    }
+    if (!state.wanted) return end(working);
+    state.working = working;
+  }
 }
 
 async function askForCauses(runner: Runner, siteId: number): Promise<void> {
@@ -79,14 +135,12 @@ async function askForCauses(runner: Runner, siteId: number): Promise<void> {
 }
 
 /** Whether background jobs are done here. */
-export const worksJobs = (): boolean => shared[KEY] !== undefined;
+export const worksJobs = (): boolean => state.working !== undefined;
 
 /** Lets the jobs that run come to their end. */
 export async function stopWorker(): Promise<void> {
-  const working = shared[KEY];
-  shared[KEY] = undefined;
-  await working?.listener.stop();
-  await working?.telling.stop();
-  await working?.runner.stop();
-  await working?.life.stop();
+  const { working } = state;
+  state.wanted = false;
+  state.working = undefined;
+  if (working) await end(working);
 }
