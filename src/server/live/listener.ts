@@ -48,11 +48,13 @@ export class Listener {
 
   /** Connects; null when there is no database to connect to. */
   private async open(): Promise<Connection | null> {
+    let client: pg.Client | undefined;
     try {
-      const client = await connect('ingest');
-      this.client = client;
+      const opened = await connect('ingest');
+      client = opened;
+      this.client = opened;
       const lost = new Promise<void>((resolve) =>
-        client.once('end', () => {
+        opened.once('end', () => {
           this.hears = false;
           resolve();
         }),
@@ -70,6 +72,8 @@ export class Listener {
         { error: error instanceof Error ? error.message : String(error) },
         'cannot listen for notices',
       );
+      // one that connected and could not listen would stay open beside the next
+      await client?.end().catch(() => undefined);
       return null;
     }
   }
