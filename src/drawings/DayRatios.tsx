@@ -35,7 +35,7 @@ export function DayRatios({ days, limit, width = 420, height = 170, paint = SCRE
       width="100%"
       role="img"
       aria-label={dayRatios.madeOfWhatWas(
-        days.map((d) => `${shown(d.day)} ${percent(d.ratio)}${d.low ? ', low' : ''}`).join('; '),
+        days.map((d) => `${shown(d.day)} ${percent(d.ratio)}${d.low ? dayRatios.low : ''}`).join('; '),
         limit,
       )}
       className={className}

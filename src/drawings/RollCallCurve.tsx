@@ -62,7 +62,7 @@ export function RollCallCurve({
         heardAtS.length,
         total,
         Math.round(nowS / 60),
-        last ? `; ${Math.round(last.expected)} expected after ${Math.round(last.atS / 60)} minutes` : '',
+        last ? rollCallCurve.expectedAfterMinutes(Math.round(last.expected), Math.round(last.atS / 60)) : '',
       )}
       style={{ height: 'auto' }}
     >

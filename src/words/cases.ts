@@ -65,6 +65,7 @@ export const figuresSheet = {
   figuresBeforeAndAfter: 'Figures before and after',
   figure: 'Figure',
   stringVoltsAlongIts: (then: string, now: string) => `String ${then}: volts along its positions${now}`,
+  beforeAndAfter2: ', before and after',
 };
 
 export const historySheet = {
@@ -132,4 +133,5 @@ export const casesWords = {
   writeAComment: 'Write a comment',
   changeWhatIsWrong: 'Change what is wrong',
   giveItToSomebody: 'Give it to somebody',
+  whatIsWrong: 'what is wrong',
 };

@@ -59,6 +59,7 @@ export const causesList = {
   nothingWasFoundIn: 'Nothing was found in the last 90 days.',
   causes: 'Causes',
   causesMore: (causes: number, more: boolean) => `${causes}${more ? ' and more: narrow the list' : ''}`,
+  stringsThatMakeLess: 'Strings that make less than they should',
 };
 
 export const causesFigures = {

@@ -38,6 +38,7 @@ export const timeChart = {
   curve: 'Curve',
   table: 'Table',
   png: 'PNG',
+  enterForTheStaircase: ', Enter for the staircase of that moment',
 };
 
 export const chartsOptions = {

@@ -13,4 +13,5 @@ export const dayCalendar = {
 export const dayRatios = {
   madeOfWhatWas: (map: string, limit: number) =>
     `Made of what was expected: ${map}. Low below ${percent(limit)}.`,
+  low: ', low',
 };

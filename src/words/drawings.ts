@@ -22,6 +22,7 @@ export const rollCallCurve = {
     `${heardAtS} of ${total} units heard after ${round} minutes${expected}.`,
   roundMin: (round: number) => `${round} min`,
   onTheAsBuilt: (total: number) => `${total} on the as-built`,
+  expectedAfterMinutes: (expected: number, round: number) => `; ${expected} expected after ${round} minutes`,
 };
 
 export const testLines = {

@@ -24,6 +24,7 @@ export const curveSheet = {
   how: 'How',
   singleDiodeModelDe: (ideality: number, resistanceSeries: number, resistanceShuntRef: number) =>
     `Single-diode model (De Soto 2006) from the sheet alone: ideality ${number(ideality, 2)}, series resistance ${number(resistanceSeries, 2)} Ω, shunt ${number(resistanceShuntRef)} Ω. Rings: the sheet’s points.`,
+  atSTC: (pmp: number) => `; ${power(pmp)} at STC`,
 };
 
 export const equipmentListWords = {

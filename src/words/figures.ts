@@ -109,4 +109,5 @@ export const yearOnYear = {
   month: 'Month',
   change: 'Change',
   ratio: 'Ratio',
+  mostIn: (month: string, energyKWh: number) => ` Most in ${month}: ${energy(energyKWh * 1000)}.`,
 };

@@ -9,6 +9,8 @@ export const fleetBoard = {
   sites: 'Sites',
   viewLinesOfSites: (view: string, lines: number, sites: number) =>
     `${view} · ${number(lines)} of ${number(sites)}`,
+  causes: 'causes',
+  sites2: 'sites',
 };
 
 export const fleetFilters = {
@@ -98,6 +100,11 @@ export const fleetMissed = {
   rollCallWasStopped: (events: string) => `A roll call was stopped${events}`,
   takenOn: (events: string) => `${events} taken on`,
   cameIn: (events: string) => `${events} came in`,
+  unit: 'unit',
+  stringFinding: 'string finding',
+  hazardWas: 'hazard was',
+  hazardsWere: 'hazards were',
+  event: 'event',
 };
 
 export const fleetNeed = {

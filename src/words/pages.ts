@@ -209,3 +209,19 @@ export const commissioningSiteWalkPage = {
 export const commissioningSiteReadingsPage = {
   meterReadings: (site: string) => `Meter readings, ${site}`,
 };
+
+export const equipmentFamilyImportPage = {
+  importS: (family: string) => `Import ${family}s`,
+};
+
+export const causesPageWords = {
+  causes: 'Causes',
+};
+
+export const equipmentFamilyTypePage = {
+  aNew: (family: string) => `A new ${family}`,
+};
+
+export const oneShutdownTestPage = {
+  shutdownTest: (signed: boolean, site: string) => `Shutdown test${signed ? ', signed' : ''}, ${site}`,
+};

@@ -39,6 +39,7 @@ export const placeDialog = {
   iHaveReadThis: 'I have read this serial on the label of the module at this place.',
   placeIt: (seat: string) => `Place it${seat}`,
   replaceOldSeat: (old: string, seat: string) => `Replace ${old}${seat}`,
+  atSeat: (seat: string) => ` at ${seat}`,
 };
 
 export const slotPicker = {

@@ -24,4 +24,6 @@ export const plannedWorksWords = {
   isolateLockOutAnd:
     'Isolate, lock out and prove dead with a rated meter; units that don’t shut down are still told at once.',
   plannedWorksSwitchNothing: 'Planned works switch nothing off.',
+  theWholeSite2: 'the whole site',
+  stringsStrings: (strings: string) => `strings ${strings}`,
 };

@@ -44,6 +44,7 @@ export const shutdownBoard = {
   sitesInShutdownOn: 'Sites in shutdown on purpose',
   aSiteWhoseInitiator: 'A site whose initiator a person opens is listed here and not among the faults.',
   noInitiatorIsOpen: 'No initiator is open',
+  causes: 'causes',
 };
 
 export const unitsTable = {

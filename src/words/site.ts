@@ -119,6 +119,8 @@ export const standingSheet = {
   allCausesHere: 'all causes here',
   since: 'since ',
   lossWhDayADay: (lossWhDay: number) => ` · ${energy(lossWhDay)} a day`,
+  atTheWholeSite: 'At the whole site',
+  atStrings: (strings: string) => `At ${strings}`,
 };
 
 export const stringsSheet = {

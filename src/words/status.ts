@@ -37,6 +37,9 @@ export const statusSheets = {
   yes: 'yes',
   noOneAccount: 'no, one account',
   connectionsRefusedForAn: 'Connections refused for an unknown token, since the start',
+  replica: 'Replica, for readers of history and reports',
+  replicaState: { serves: 'serves', behind: 'too far behind', away: 'away' },
+  secondsBehind: (lagS: number) => `, ${number(lagS, 1)} s behind`,
   processName: (name: string) => `Process ${name}`,
   servesLoggers: (loggers: number) => `serves ${number(loggers)} loggers`,
   noProcessServesA: 'No process serves a logger of yours just now.',
@@ -47,6 +50,7 @@ export const statusFindingWords = {
   rollUpsStandStill: 'roll-ups stand still',
   noPlaceIsPrepared: 'no place is prepared for the frames of tomorrow',
   allRunsWithOne: 'all runs with one database account',
+  theReplicaDoesNot: 'the replica does not serve, so the primary answers its readers',
   loggersOfLoggersConnected: (loggers: number, away: number, refused: number) =>
     `${number(loggers - away)} of ${counted(loggers, 'logger')} connected; ${refused === 0 ? 'no message was refused' : `${counted(refused, 'message')} refused since they were set up`}.`,
   ofNotConnected: (away: number, loggers: number) =>
@@ -54,4 +58,42 @@ export const statusFindingWords = {
   nothingNewerIsKnown: (away: number, counts: string) =>
     `Nothing newer is known of ${away === 1 ? 'its site' : 'their sites'} until ${away === 1 ? 'it comes' : 'they come'} back. ${counts}`,
   theInstallationRunsAs: 'The installation runs as it should',
+};
+
+export const processSheets = {
+  nameDashed: (name: string) => `${name} (dashed) `,
+  markWordsAtMarks: (markWords: string, marks: number) => `; ${markWords} at ${counted(marks, 'time')}`,
+  markWordsAtMarks2: (markWords: string, marks: number) => `${markWords} at ${counted(marks, 'time')}`,
+  processOn: (process: string, host: string, roles: string) => `Process ${process} on ${host}: ${roles}`,
+  numberRunsSince: (pid: number) => `number ${pid}, runs since `,
+  inTheLast: (running: number, hours: number) =>
+    `${counted(running, 'process', 'processes')} in the last ${counted(hours, 'hour')}`,
+  howFarBack: 'How far back',
+  theFirstComeA: 'The first come a minute after a start.',
+  noProcessHasTold: 'No process has told its figures in the last minutes',
+  endedOrAwayFrom: 'Ended, or away from the database: ',
+  onLastHeard: (process: string, host: string, roles: string) =>
+    `${process} on ${host} (${roles}), last heard `,
+  andMore: (ended: number) => `; and ${ended - 12} more`,
+};
+
+export const processLines = {
+  readingsMadeDurable: 'Readings made durable',
+  readingsThatWaitedAt: 'Readings that waited at once',
+  commitAndAcknowledgement95: 'Commit and acknowledgement, 95 of 100 within',
+  judgedAfterCommit95: 'Judged after commit, 95 of 100 within',
+  delayOfTheEvent: 'Delay of the event loop, 99 of 100 within',
+  n99Of100: '99 of 100',
+  pagesAndAnswers95: 'Pages and answers, 95 of 100 within',
+  pagesAndAnswers: 'Pages and answers',
+  browsersThatListen: 'Browsers that listen',
+  jobsRun: 'Jobs run',
+  aMinute: 'a minute',
+  longestThatADue: 'Longest that a due job has waited',
+  memory: 'Memory',
+  socketsWerePaused: 'sockets were paused',
+  anAnswerFailed: 'an answer failed',
+  aBrowserReadToo: 'a browser read too slowly',
+  aJobFailed: 'a job failed',
+  noneYet: 'none yet',
 };

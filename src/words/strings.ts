@@ -139,6 +139,9 @@ export const unitsSheet = {
   meansOf15Minutes: 'Means of 15 minutes. ',
   singleUnitsAreKept: 'Single units are kept by quarters of an hour: a month is shown. ',
   beforeAMarkThe: 'Before a mark the readings of that position are another unit’s.',
+  beforeAMarkTheReadings: 'Before a mark the readings of that position are another unit’s. ',
+  rustStuckLateOr: 'Rust: stuck, late or flapping now. ',
+  crimsonNotShuttingDown: 'Crimson: not shutting down. ',
 };
 
 export const whenNear = {

@@ -1,3 +1,4 @@
+import { number } from '../drawings/numbers';
 import { clock } from '../drawings/times';
 
 export const caution = {
@@ -22,4 +23,9 @@ export const live = {
 
 export const notRead = {
   tryAgain: 'Try again',
+};
+
+export const showMore = {
+  showMoreOfShown: (what: string, shown: number, n: number) =>
+    `Show more ${what} (${number(shown)} of ${number(n)} shown)`,
 };

@@ -74,6 +74,7 @@ export const walkBoard = {
   oneScreenForThe: (map: string) =>
     `One screen for the pocket: places, ${map}, connector types, what the meter should read.`,
   openTheLadderCard: 'Open the ladder card',
+  countedCountSpareUnit: (count: number) => counted(count, 'spare unit'),
 };
 
 export const walkStops = {

@@ -123,10 +123,7 @@ export function TimeChart({
     <figure
       ref={figure}
       tabIndex={0}
-      aria-label={timeChart.pressForTheFigures(
-        model.title,
-        onMoment ? ', Enter for the staircase of that moment' : '',
-      )}
+      aria-label={timeChart.pressForTheFigures(model.title, onMoment ? timeChart.enterForTheStaircase : '')}
       onKeyDown={onKeyDown}
       className="bg-sheet"
     >

@@ -165,8 +165,8 @@ export function PlaceDialog({ siteId, strings, answers, stranger, slot, onClose,
           check={serial.length >= 4 ? placeDialog.haveReadOnThe(serial) : placeDialog.iHaveReadThis}
           submit={
             old === null
-              ? placeDialog.placeIt(seat ? ` at ${nameOf(seat)}` : '')
-              : placeDialog.replaceOldSeat(old, seat ? ` at ${nameOf(seat)}` : '')
+              ? placeDialog.placeIt(seat ? placeDialog.atSeat(nameOf(seat)) : '')
+              : placeDialog.replaceOldSeat(old, seat ? placeDialog.atSeat(nameOf(seat)) : '')
           }
           pending={placing.isPending}
           error={placing.error}

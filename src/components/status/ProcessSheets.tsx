@@ -1,11 +1,12 @@
 import { MinuteLines } from '../../drawings/MinuteLines';
-import { counted, listed } from '../../drawings/numbers';
+import { listed } from '../../drawings/numbers';
 import { ago, fullTime } from '../../drawings/times';
 import { HISTORY_HOURS, type HistoryHours, type ProcessHistory } from '../../schemas/api/processes';
 import { paths } from '../../schemas/paths';
 import { Notice } from '../ui/Notice';
 import { Sheet } from '../ui/Sheet';
 import { isQuiet, lineOf, MARK_WORDS, marksOf, newest, PICTURES, type Picture } from './process-lines';
+import { processSheets } from '../../words/status';
 
 interface Shown {
   history: ProcessHistory;
@@ -27,7 +28,9 @@ function One({ picture, history, from, to, timeZone }: Shown & { picture: Pictur
         <span className="text-sm">
           {figures.map(({ name, words }, i) => (
             <span key={name ?? i} className="ml-2 whitespace-nowrap first:ml-0">
-              {name && <span className="text-ink-2">{i === 0 ? `${name} ` : `${name} (dashed) `}</span>}
+              {name && (
+                <span className="text-ink-2">{i === 0 ? `${name} ` : processSheets.nameDashed(name)}</span>
+              )}
               <span className="font-semibold">{words}</span>
             </span>
           ))}
@@ -39,12 +42,12 @@ function One({ picture, history, from, to, timeZone }: Shown & { picture: Pictur
         timeZone={timeZone}
         lines={picture.lines.map((line) => lineOf(samples, line, from, to))}
         marks={marks}
-        label={`${picture.title}: ${said}${marks.length > 0 && markWords ? `; ${markWords} at ${counted(marks.length, 'time')}` : ''}`}
+        label={`${picture.title}: ${said}${marks.length > 0 && markWords ? processSheets.markWordsAtMarks(markWords, marks.length) : ''}`}
       />
       {marks.length > 0 && markWords && (
         <p className="text-sm text-rust-ink">
           <span aria-hidden="true">▏</span>
-          {markWords} at {counted(marks.length, 'time')}
+          {processSheets.markWordsAtMarks2(markWords, marks.length)}
         </p>
       )}
     </figure>
@@ -58,10 +61,10 @@ function Process(shown: Shown) {
     <Sheet
       id={`process-${history.process.slice(0, 8)}`}
       level={3}
-      title={`Process ${history.process.slice(0, 8)} on ${history.host}: ${listed(history.roles)}`}
+      title={processSheets.processOn(history.process.slice(0, 8), history.host, listed(history.roles))}
       aside={
         <>
-          number {history.pid}, runs since{' '}
+          {processSheets.numberRunsSince(history.pid)}
           <time dateTime={history.startedAt} title={fullTime(history.startedAt, timeZone)}>
             {ago(history.startedAt, nowAt)}
           </time>
@@ -95,9 +98,9 @@ export function ProcessSheets({ histories, hours, at, timeZone }: Props) {
     <section aria-labelledby="processes-title" className="space-y-4">
       <div className="flex flex-wrap items-baseline justify-between gap-x-4">
         <h2 id="processes-title" className="text-[18px] leading-6 tracking-[-0.01em]">
-          {counted(running.length, 'process', 'processes')} in the last {counted(hours, 'hour')}
+          {processSheets.inTheLast(running.length, hours)}
         </h2>
-        <nav aria-label="How far back" className="flex">
+        <nav aria-label={processSheets.howFarBack} className="flex">
           {HISTORY_HOURS.map((choice) => (
             <a
               key={choice}
@@ -111,8 +114,8 @@ export function ProcessSheets({ histories, hours, at, timeZone }: Props) {
         </nav>
       </div>
       {running.length === 0 && (
-        <Notice kind="empty" title="No process has told its figures in the last minutes">
-          The first come a minute after a start.
+        <Notice kind="empty" title={processSheets.noProcessHasTold}>
+          {processSheets.theFirstComeA}
         </Notice>
       )}
       {running.map((history) => (
@@ -120,20 +123,20 @@ export function ProcessSheets({ histories, hours, at, timeZone }: Props) {
       ))}
       {ended.length > 0 && (
         <p className="text-sm text-ink-2">
-          Ended, or away from the database:{' '}
+          {processSheets.endedOrAwayFrom}
           {ended.slice(0, 12).map((h, i) => {
             const last = new Date((h.samples.at(-1)?.at ?? 0) * 1000).toISOString();
             return (
               <span key={h.process}>
                 {i > 0 && '; '}
-                {h.process.slice(0, 8)} on {h.host} ({listed(h.roles)}), last heard{' '}
+                {processSheets.onLastHeard(h.process.slice(0, 8), h.host, listed(h.roles))}
                 <time dateTime={last} title={fullTime(last, timeZone)}>
                   {ago(last, at)}
                 </time>
               </span>
             );
           })}
-          {ended.length > 12 && `; and ${ended.length - 12} more`}.
+          {ended.length > 12 && processSheets.andMore(ended.length)}.
         </p>
       )}
     </section>

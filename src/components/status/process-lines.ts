@@ -1,6 +1,7 @@
 import type { TimeLine } from '../../drawings/HistoryLines';
 import { number, quantity } from '../../drawings/numbers';
 import type { ProcessFigures, ProcessHistory, ProcessSample } from '../../schemas/api/processes';
+import { processLines } from '../../words/status';
 
 type Figure = keyof ProcessFigures;
 interface Line {
@@ -28,20 +29,20 @@ const perMinute = (value: number, { spanS }: ProcessSample): number => (value / 
 /** What the status page draws of each process, in its order. */
 export const PICTURES: readonly Picture[] = [
   {
-    title: 'Readings made durable',
+    title: processLines.readingsMadeDurable,
     unit: '1/s',
     role: 'ingest',
     lines: [{ figure: 'readingsPerS', gather: 'mean' }],
   },
   {
-    title: 'Readings that waited at once',
+    title: processLines.readingsThatWaitedAt,
     unit: 'readings',
     role: 'ingest',
     lines: [{ figure: 'waitingReadings', gather: 'worst' }],
     marked: 'pauses',
   },
   {
-    title: 'Commit and acknowledgement, 95 of 100 within',
+    title: processLines.commitAndAcknowledgement95,
     unit: 'ms',
     role: 'ingest',
     lines: [
@@ -50,56 +51,56 @@ export const PICTURES: readonly Picture[] = [
     ],
   },
   {
-    title: 'Judged after commit, 95 of 100 within',
+    title: processLines.judgedAfterCommit95,
     unit: 'ms',
     role: 'ingest',
     lines: [{ figure: 'judgedP95Ms', gather: 'worst' }],
   },
   {
-    title: 'Delay of the event loop, 99 of 100 within',
+    title: processLines.delayOfTheEvent,
     unit: 'ms',
     lines: [
-      { figure: 'loopP99Ms', name: '99 of 100', gather: 'worst' },
+      { figure: 'loopP99Ms', name: processLines.n99Of100, gather: 'worst' },
       { figure: 'loopP50Ms', name: 'half', gather: 'mean' },
     ],
     digits: 1,
   },
   {
-    title: 'Pages and answers, 95 of 100 within',
+    title: processLines.pagesAndAnswers95,
     unit: 'ms',
     role: 'web',
     lines: [{ figure: 'requestP95Ms', gather: 'worst' }],
     marked: 'requestsFailed',
   },
   {
-    title: 'Pages and answers',
+    title: processLines.pagesAndAnswers,
     unit: '1/s',
     role: 'web',
     lines: [{ figure: 'requestsPerS', gather: 'mean' }],
     digits: 2,
   },
   {
-    title: 'Browsers that listen',
+    title: processLines.browsersThatListen,
     unit: 'browsers',
     role: 'web',
     lines: [{ figure: 'liveClients', gather: 'worst' }],
     marked: 'liveSlow',
   },
   {
-    title: 'Jobs run',
-    unit: 'a minute',
+    title: processLines.jobsRun,
+    unit: processLines.aMinute,
     role: 'worker',
     lines: [{ figure: 'jobsRun', gather: 'mean', drawn: perMinute }],
     marked: 'jobsFailed',
   },
   {
-    title: 'Longest that a due job has waited',
+    title: processLines.longestThatADue,
     unit: 's',
     role: 'worker',
     lines: [{ figure: 'oldestDueS', gather: 'worst' }],
   },
   {
-    title: 'Memory',
+    title: processLines.memory,
     unit: 'MB',
     lines: [{ figure: 'rssBytes', gather: 'worst', drawn: (bytes) => bytes / 1e6 }],
   },
@@ -107,10 +108,10 @@ export const PICTURES: readonly Picture[] = [
 
 /** What a mark below each picture's line stands for. */
 export const MARK_WORDS: Partial<Record<Figure, string>> = {
-  pauses: 'sockets were paused',
-  requestsFailed: 'an answer failed',
-  liveSlow: 'a browser read too slowly',
-  jobsFailed: 'a job failed',
+  pauses: processLines.socketsWerePaused,
+  requestsFailed: processLines.anAnswerFailed,
+  liveSlow: processLines.aBrowserReadToo,
+  jobsFailed: processLines.aJobFailed,
 };
 
 /** A process that was quiet for longer than this has ended, or can't reach the database. Seconds. */
@@ -174,7 +175,7 @@ export function newest(
 ): string {
   const sample = samples.findLast((s) => s.figures[line.figure] !== null);
   const value = sample?.figures[line.figure] ?? null;
-  if (!sample || value === null) return 'none yet';
+  if (!sample || value === null) return processLines.noneYet;
   const drawn = line.drawn ? line.drawn(value, sample) : value;
   return unit === 'readings' || unit === 'browsers' ? number(drawn) : quantity(drawn, unit, digits ?? 0);
 }

@@ -1,5 +1,6 @@
 import { number } from '../../drawings/numbers';
 import { Button } from './Button';
+import { showMore } from '../../words/ui';
 
 interface Props {
   /** Entries shown, of so many; nothing stands here once all are. */
@@ -15,9 +16,7 @@ export function ShowMore({ shown, of, what, onMore }: Props) {
   if (shown >= of) return null;
   return (
     <p className="no-print mt-3">
-      <Button onClick={onMore}>
-        Show more {what} ({number(shown)} of {number(of)} shown)
-      </Button>
+      <Button onClick={onMore}>{showMore.showMoreOfShown(what, shown, of)}</Button>
     </p>
   );
 }

@@ -69,7 +69,9 @@ export function entryWords(entry: CaseEntry): string {
       return casesWords.changedMap(
         changesOf(entry)
           .map((c) =>
-            c.field === 'what is wrong' ? 'what is wrong' : `${c.field}: ${short(c.from)} → ${short(c.to)}`,
+            c.field === 'what is wrong'
+              ? casesWords.whatIsWrong
+              : `${c.field}: ${short(c.from)} → ${short(c.to)}`,
           )
           .join('; '),
       );

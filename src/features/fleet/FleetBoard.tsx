@@ -107,7 +107,7 @@ export function FleetBoard({ initial, whole, view: initialView, missed, timeZone
           <ShowMore
             shown={shownCauses.length}
             of={causes.length}
-            what="causes"
+            what={fleetBoard.causes}
             onMore={() => {
               setAllCauses(true);
               askForRest();
@@ -146,7 +146,7 @@ export function FleetBoard({ initial, whole, view: initialView, missed, timeZone
           <ShowMore
             shown={Math.min(most, lines.length)}
             of={partly?.lines ?? lines.length}
-            what="sites"
+            what={fleetBoard.sites2}
             onMore={() => {
               setMost(most + 4 * LINES_AT_ONCE);
               askForRest();

@@ -12,19 +12,19 @@ export function missedInWords({ kind, events, units }: MissedItem): string {
   const n = Math.max(units, 1);
   switch (kind) {
     case 'units_not_shutting_down':
-      return fleetMissed.didNotShutDown(some(n, 'unit'));
+      return fleetMissed.didNotShutDown(some(n, fleetMissed.unit));
     case 'units_stuck':
-      return fleetMissed.gotStuckInShutdown(some(n, 'unit'));
+      return fleetMissed.gotStuckInShutdown(some(n, fleetMissed.unit));
     case 'units_unconfirmed':
-      return fleetMissed.theShutdownOfCould(some(n, 'unit'));
+      return fleetMissed.theShutdownOfCould(some(n, fleetMissed.unit));
     case 'units_silent':
-      return fleetMissed.fellSilent(some(n, 'unit'));
+      return fleetMissed.fellSilent(some(n, fleetMissed.unit));
     case 'units_recovered':
-      return fleetMissed.nRecovered(some(n, 'unit'));
+      return fleetMissed.nRecovered(some(n, fleetMissed.unit));
     case 'string_finding':
-      return fleetMissed.eventsBegan(some(events, 'string finding'));
+      return fleetMissed.eventsBegan(some(events, fleetMissed.stringFinding));
     case 'string_finding_ended':
-      return fleetMissed.eventsEnded(some(events, 'string finding'));
+      return fleetMissed.eventsEnded(some(events, fleetMissed.stringFinding));
     case 'logger_lost':
       return fleetMissed.theLoggerStoppedReporting(times(events));
     case 'gateway_silent':
@@ -36,8 +36,8 @@ export function missedInWords({ kind, events, units }: MissedItem): string {
     case 'roll_call_stopped':
       return fleetMissed.rollCallWasStopped(times(events));
     case 'hazard_acknowledged':
-      return fleetMissed.takenOn(some(events, 'hazard was', 'hazards were'));
+      return fleetMissed.takenOn(some(events, fleetMissed.hazardWas, fleetMissed.hazardsWere));
     default:
-      return fleetMissed.cameIn(some(events, 'event'));
+      return fleetMissed.cameIn(some(events, fleetMissed.event));
   }
 }

@@ -44,7 +44,9 @@ function Work({
           {plannedWorksWords.to}
           <SiteTime at={work.endsAt} {...time} zone />
           {plannedWorksWords.enteredBy(
-            work.strings === null ? 'the whole site' : `strings ${work.strings.join(', ')}`,
+            work.strings === null
+              ? plannedWorksWords.theWholeSite2
+              : plannedWorksWords.stringsStrings(work.strings.join(', ')),
             work.by,
           )}
           {work.endedBy && plannedWorksWords.endedEarlyBy(work.endedBy)}

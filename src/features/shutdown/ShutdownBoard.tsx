@@ -100,7 +100,7 @@ export function ShutdownBoard({ initial, view: initialView, timeZone }: Props) {
       <ShowMore
         shown={shownOf({ verdict, causes }, whole).length}
         of={causes.length}
-        what="causes"
+        what={shutdownBoard.causes}
         onMore={() => setWhole(new Set([...whole, verdict]))}
       />
     </section>

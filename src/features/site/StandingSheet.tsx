@@ -23,7 +23,9 @@ export function StandingSheet({ siteId, standing, now, timeZone }: Props) {
         <div key={w.id} className="mb-4">
           <Notice kind="stale" title={standingSheet.plannedWorks(w.reason)}>
             {standingSheet.stringsUntil(
-              w.strings === null ? 'At the whole site' : `At ${w.strings.join(', ')}`,
+              w.strings === null
+                ? standingSheet.atTheWholeSite
+                : standingSheet.atStrings(w.strings.join(', ')),
             )}
             <SiteTime at={w.endsAt} now={now} timeZone={timeZone} />
             {standingSheet.whatHappensThereIs}

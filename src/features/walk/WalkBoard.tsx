@@ -6,7 +6,6 @@ import { NotRead } from '../../components/ui/NotRead';
 import { Notice } from '../../components/ui/Notice';
 import { Sheet } from '../../components/ui/Sheet';
 import { Walk } from '../../drawings/Walk';
-import { counted } from '../../drawings/numbers';
 import { withQuery } from '../../lib/api';
 import { useLive } from '../../lib/live-hook';
 import { queryClient } from '../../lib/query-client';
@@ -117,7 +116,7 @@ export function WalkBoard({ initial, view: asked }: Props) {
             <Sheet id="card" title={walkBoard.ladderCard}>
               <p className="mb-3 text-ink-2">
                 {walkBoard.oneScreenForThe(
-                  spares.units.map((u) => counted(u.count, 'spare unit')).join(', '),
+                  spares.units.map((u) => walkBoard.countedCountSpareUnit(u.count)).join(', '),
                 )}
               </p>
               <ButtonLink

@@ -7,6 +7,7 @@ import { Staircase, staircaseInWords } from '../../drawings/Staircase';
 import { staircaseGeometry } from '../../drawings/staircase-geometry';
 import type { StringNow } from '../../schemas/api/now';
 import { textAsPaths } from './text-as-paths';
+import { letterPicture } from '../../words/letters-sent';
 
 /** The drawing in a letter: one string as its staircase, several as their combs. Drawn for a phone's width. */
 export interface LetterPicture {
@@ -44,7 +45,10 @@ export async function stringsPicture(strings: readonly StringNow[]): Promise<Let
       <Staircase id="s" width={PICTURE_WIDTH} height={STAIRCASE_HEIGHT} paint={PAPER} {...input} />,
     );
     const words = staircaseInWords(staircaseGeometry(input, PICTURE_WIDTH, STAIRCASE_HEIGHT), input);
-    return { png: await pngOf(markup, STAIRCASE_HEIGHT), alt: `String ${first.name}. ${words}` };
+    return {
+      png: await pngOf(markup, STAIRCASE_HEIGHT),
+      alt: letterPicture.stringFirstWords(first.name, words),
+    };
   }
   const shown = strings.slice(0, ROWS_MAX);
   const more = strings.length - shown.length;
@@ -64,13 +68,15 @@ export async function stringsPicture(strings: readonly StringNow[]): Promise<Let
       ))}
       {more > 0 && (
         <text x="0" y={shown.length * ROW + 16} fill={PAPER.ink2} fontSize="12">
-          {`and ${more} more`}
+          {letterPicture.andMore(more)}
         </text>
       )}
     </svg>,
   );
   const alt = shown
-    .map((s) => `String ${s.name}: ${combInWords(s.slots, combGeometry(s.slots, width, 24).teeth)}`)
+    .map((s) =>
+      letterPicture.stringNameSlots(s.name, combInWords(s.slots, combGeometry(s.slots, width, 24).teeth)),
+    )
     .join(' ');
   return { png: await pngOf(markup, height), alt };
 }

@@ -1,4 +1,5 @@
 import { PAPER } from '../../drawings/paint';
+import { lettersSentLetter } from '../../words/letters-sent';
 
 /** A letter as plain text and as HTML from the same parts, so that neither says what the other does not. */
 export interface LetterParts {
@@ -50,13 +51,13 @@ function textOf(parts: LetterParts): string {
   const { greeting, finding, paragraphs, caution, picture, action, figures = [], sections = [] } = parts;
   const { footer, wayOut } = parts;
   const blocks = [
-    ...(finding ? [parts.hazard ? `NOT SHUTTING DOWN: ${finding}` : finding] : []),
+    ...(finding ? [parts.hazard ? lettersSentLetter.notSHUTTINGDOWN(finding) : finding] : []),
     greeting,
     ...paragraphs,
     ...(parts.call ? [`${parts.call.words}: ${parts.call.number}`] : []),
     ...(caution ? [`! ${caution.strong} ${caution.rest}`] : []),
     ...(figures.length > 0 ? [figures.map(([name, value]) => `${name}: ${value}`).join('\n')] : []),
-    ...(picture ? [`[Drawing: ${picture.alt}]`] : []),
+    ...(picture ? [lettersSentLetter.drawingAlt(picture.alt)] : []),
     ...sections.map(({ title, items }) =>
       [
         `${title.toUpperCase()}\n${'='.repeat(title.length)}`,

@@ -22,6 +22,7 @@ import {
 } from '../queries/accounts';
 import { addMessage } from '../queries/outbox';
 import { addAuditEntry, credentialsOf } from '../queries/people';
+import { accountLetters } from '../../words/letters-sent';
 
 /** What a link in a letter lets somebody do without being signed in. */
 
@@ -30,7 +31,7 @@ const HOUR_MS = 3_600_000;
 
 const gone = (what: string) =>
   new AppError('not_found', {
-    message: `This ${what} can’t be used: it was used before, has run out, or was ended. Ask for a new one.`,
+    message: accountLetters.thisCantBeUsed(what),
   });
 
 /** An invitation that can be used. @throws AppError not_found · too_many */
@@ -95,13 +96,10 @@ export async function askForPassword(email: string, address: string, at: Date): 
       expiresAt: new Date(at.getTime() + RESET_HOURS * HOUR_MS),
     });
     const { text, html } = letter({
-      greeting: `Hello ${person.name}`,
-      paragraphs: [
-        'Somebody, most likely you, asked for a new password for Wakeline.',
-        `The link below works once, for ${RESET_HOURS} hours. Every device is signed out when the new password is set.`,
-      ],
-      action: { words: 'Set a new password', href: `${publicUrl()}${paths.newPassword(token)}` },
-      footer: 'If it was not you, leave this letter: your password stays as it is.',
+      greeting: accountLetters.helloPerson(person.name),
+      paragraphs: [accountLetters.somebodyMostLikelyYou, accountLetters.theLinkBelowWorks(RESET_HOURS)],
+      action: { words: accountLetters.setANewPassword, href: `${publicUrl()}${paths.newPassword(token)}` },
+      footer: accountLetters.ifItWasNot,
     });
     await addMessage(tx, {
       organisationId: person.organisationId,
@@ -110,7 +108,7 @@ export async function askForPassword(email: string, address: string, at: Date): 
       kind: 'password_reset',
       eventKey: `account_link:${hash.toString('hex')}`,
       to: { address: person.email, name: person.name },
-      subject: 'A new password for Wakeline',
+      subject: accountLetters.aNewPasswordFor,
       text,
       html,
     });

@@ -30,6 +30,7 @@ import { packData, type PackData } from '../reports/handover/data';
 import { handoverPdf } from '../reports/handover/document';
 import { designWords } from './handover-design';
 import { packTests } from './handover-tests';
+import { lettersSentMakeHandover } from '../../words/letters-sent';
 
 /** Photos on paper need no more than this many bytes each, and not every one of thousands. */
 const MOST_PHOTOS = 400;
@@ -66,7 +67,7 @@ export async function makeHandover(
   const open = openGaps(commissioningSteps(facts));
   if (open.length > 0)
     throw new AppError('conflict', {
-      message: `${open.length === 1 ? 'One point still blocks' : `${open.length} points still block`} the handover. Settle each, or have a manager accept it by name.`,
+      message: lettersSentMakeHandover.open1OnePoint(open.length),
       fields: open.slice(0, 50).map((gap) => ({ field: gap.key, message: gap.words })),
     });
 
@@ -131,15 +132,15 @@ async function tellOf(tx: Tx, site: VisibleSite, pack: { ref: string; version: n
   const href = `${publicUrl()}${paths.customer(site.ref)}`;
   for (const customer of await customersOf(tx, site.id)) {
     const { text, html } = letter({
-      greeting: `Hello ${customer.name}`,
+      greeting: lettersSentMakeHandover.helloCustomer(customer.name),
       paragraphs: [
         pack.version === 1
-          ? `The solar system of ${site.name} has been handed over. Its papers are ready for you: how it is built, what was measured, and how to look after it.`
-          : `The papers of ${site.name} have been renewed: this is version ${pack.version}. The earlier versions stay available.`,
-        'Keep them where the people who work on the roof will find them.',
+          ? lettersSentMakeHandover.theSolarSystemOf(site.name)
+          : lettersSentMakeHandover.thePapersOfHave(site.name, pack.version),
+        lettersSentMakeHandover.keepThemWhereThe,
       ],
-      action: { words: 'See your site and its papers', href },
-      footer: `You get this letter because you look after ${site.name}. It was sent by Wakeline for the people who built it.`,
+      action: { words: lettersSentMakeHandover.seeYourSiteAnd, href },
+      footer: lettersSentMakeHandover.youGetThisLetter(site.name),
     });
     await addMessage(tx, {
       organisationId: site.organisationId,
@@ -150,8 +151,8 @@ async function tellOf(tx: Tx, site: VisibleSite, pack: { ref: string; version: n
       to: { address: customer.email, name: customer.name },
       subject:
         pack.version === 1
-          ? `${site.name}: your papers are ready`
-          : `${site.name}: new papers, version ${pack.version}`,
+          ? lettersSentMakeHandover.yourPapersAreReady(site.name)
+          : lettersSentMakeHandover.newPapersVersion(site.name, pack.version),
       text,
       html,
     });

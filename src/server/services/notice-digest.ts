@@ -1,6 +1,5 @@
 import { adviceFor } from '../../domain/notices/advice';
 import { KINDS, type NoticeKind } from '../../domain/notices/kinds';
-import { countAtStart, counted, energy } from '../../drawings/numbers';
 import { clockOrDate } from '../../drawings/times';
 import { publicUrl } from '../config';
 import { asIngest, type Tx } from '../db/transaction';
@@ -9,6 +8,7 @@ import { recipients, type RecipientRow } from '../queries/notices-tell';
 import { dueLetters, markLettered, type GatheredLine } from '../queries/notices-write';
 import { addMessage } from '../queries/outbox';
 import { CAUTION, choicesLine, drawn, greetingOf, pictureOf, wayOutOf } from './notice-letters';
+import { noticeDigest } from '../../words/letters-sent';
 
 /** The letter that gathers several: the day's, and the one after quiet hours. */
 
@@ -55,8 +55,8 @@ async function writeOne(tx: Tx, now: Date): Promise<'none' | 'written' | 'droppe
     ...(open.length > 0 && { caution: CAUTION }),
     ...drawn(picture),
     sections: words.sections,
-    footer: `You get this letter because you look after sites for ${person.organisationName}; it gathers what you are told of once a day or after quiet hours. ${choicesLine()}`,
-    wayOut: { ...wayOut, words: 'No more of these letters' },
+    footer: noticeDigest.youGetThisLetter(person.organisationName, choicesLine()),
+    wayOut: { ...wayOut, words: noticeDigest.noMoreOfThese },
   });
   await addMessage(tx, {
     organisationId: person.organisationId,
@@ -84,8 +84,7 @@ function money(wh: number, line: Pick<GatheredLine, 'price' | 'currency'>): stri
   );
   return `, ${worth}`;
 }
-const came = (line: GatheredLine): string =>
-  line.came === 0 ? '' : ` It went and came back ${line.came === 1 ? 'once' : `${line.came} times`} since.`;
+const came = (line: GatheredLine): string => (line.came === 0 ? '' : noticeDigest.itWentAndCame(line.came));
 
 function todoItem(line: GatheredLine): LetterSection['items'][number] {
   const advice = adviceFor(line.causeKind ?? '', line.sharedPart?.kind ?? null);
@@ -93,11 +92,11 @@ function todoItem(line: GatheredLine): LetterSection['items'][number] {
     title: `${line.siteName}: ${line.headline}`,
     href: publicUrl() + line.href,
     lines: [
-      `To do: ${advice.today}${came(line)}`,
+      noticeDigest.toDo(advice.today, came(line)),
       line.lossWhDay
-        ? `Worth: about ${energy(line.lossWhDay)} a day${money(line.lossWhDay, line)}.`
-        : 'Worth: what it costs is not known.',
-      `On the ladder: ${advice.ladder}`,
+        ? noticeDigest.worthAboutDay(line.lossWhDay, money(line.lossWhDay, line))
+        : noticeDigest.worthWhatItCosts,
+      noticeDigest.onTheLadder(advice.ladder),
     ],
   };
 }
@@ -142,21 +141,17 @@ export function gatheredWords(
       : '';
   const finding =
     todo.length > 0
-      ? `${countAtStart(todo.length)} ${todo.length === 1 ? 'thing' : 'things'} to do${lossWh > 0 ? `, worth about ${energy(lossWh)} a day${amount}` : ''}`
+      ? noticeDigest.todoTodoToDo(todo.length, lossWh, amount)
       : over.length > 0 && other.length === 0
-        ? `Nothing has to be done: ${counted(over.length, 'thing is', 'things are')} over`
-        : `Nothing has to be done at the roofs: ${counted(kept.length, 'thing', 'things')} to know`;
+        ? noticeDigest.nothingHasToBe(over.length)
+        : noticeDigest.nothingHasToBeDone(kept.length);
   return {
     finding,
-    paragraphs: [
-      todo.length > 0
-        ? 'Dearest first. Each says what to do, what it costs while it lasts, and what to tell the person on the ladder.'
-        : 'What came and went since the last letter is below.',
-    ],
+    paragraphs: [todo.length > 0 ? noticeDigest.dearestFirstEachSays : noticeDigest.whatCameAndWent],
     sections: [
-      { title: 'To do', items: todo.map(todoItem) },
-      { title: 'To know', items: other.map((l) => otherItem(l, person, now)) },
-      { title: 'Over by itself', items: over.map((l) => otherItem(l, person, now)) },
+      { title: noticeDigest.toDo2, items: todo.map(todoItem) },
+      { title: noticeDigest.toKnow, items: other.map((l) => otherItem(l, person, now)) },
+      { title: noticeDigest.overByItself, items: over.map((l) => otherItem(l, person, now)) },
     ].filter((s) => s.items.length > 0),
   };
 }

@@ -2,7 +2,6 @@ import { createHash } from 'node:crypto';
 import { adviceFor } from '../../domain/notices/advice';
 import { KINDS } from '../../domain/notices/kinds';
 import { liveWords, stringsInWords } from '../../domain/notices/words';
-import { energy } from '../../drawings/numbers';
 import { fullTime } from '../../drawings/times';
 import { paths } from '../../schemas/paths';
 import { publicUrl } from '../config';
@@ -16,6 +15,7 @@ import { stringsNow } from '../queries/now';
 import { addMessage, keepPicture } from '../queries/outbox';
 import type { Told } from '../../domain/notices/event';
 import { unsubscribeUrl, type LetterOf } from './notice-links';
+import { noticeLetters } from '../../words/letters-sent';
 
 /** A letter about one thing, at once. */
 
@@ -50,7 +50,7 @@ export async function pictureOf(
 export const drawn = (picture: KeptPicture | null): Pick<LetterParts, 'picture'> =>
   picture ? { picture: { cid: PICTURE_CID, width: PICTURE_WIDTH, alt: picture.alt } } : {};
 
-export const greetingOf = (person: { name: string }): string => `Hello ${person.name},`;
+export const greetingOf = (person: { name: string }): string => noticeLetters.helloPerson(person.name);
 
 export interface Telling {
   told: Told;
@@ -72,8 +72,8 @@ export function together(tellings: readonly Telling[]): Telling | undefined {
   return {
     ...first,
     words: {
-      headline: `${first.words.headline}, and ${tellings.length - 1} more`,
-      body: hazard ? liveWords(units) : 'Found at the same moment:',
+      headline: noticeLetters.andMore(first.words.headline, tellings.length),
+      body: hazard ? liveWords(units) : noticeLetters.foundAtTheSame,
     },
     cause: first.cause && {
       ...first.cause,
@@ -94,7 +94,7 @@ const eachOf = ({ each = [] }: Telling): Pick<LetterParts, 'sections'> =>
     : {
         sections: [
           {
-            title: 'Each',
+            title: noticeLetters.each,
             items: each.map((t) => ({
               title: t.words.headline,
               lines: t.cause?.evidence ? [t.cause.evidence] : t.words.body ? [t.words.body] : [],
@@ -106,20 +106,20 @@ const eachOf = ({ each = [] }: Telling): Pick<LetterParts, 'sections'> =>
 
 /** Above whatever sends somebody to a roof. */
 export const CAUTION = {
-  strong: 'Shutdown is not isolation.',
-  rest: 'Each module and its leads to its unit stay at module voltage. Isolate, lock out, and prove dead with a rated meter; local code and the authority having jurisdiction come first.',
+  strong: noticeLetters.shutdownIsNotIsolation,
+  rest: noticeLetters.eachModuleAndIts,
 };
 
 function callWhom({ event }: Telling, person: RecipientRow): [string, string][] {
   const { contactName, contactPhone, switchPlace, place } = event.site;
   const contact = [contactName, contactPhone].filter(Boolean).join(', ');
   return [
-    ...(contact ? [['At the site', contact] as [string, string]] : []),
+    ...(contact ? [[noticeLetters.atTheSite, contact] as [string, string]] : []),
     ...(person.organisationPhone
       ? [[person.organisationName, person.organisationPhone] as [string, string]]
       : []),
-    ...(switchPlace ? [['Shutdown switch', switchPlace] as [string, string]] : []),
-    ...(place ? [['Where', place] as [string, string]] : []),
+    ...(switchPlace ? [[noticeLetters.shutdownSwitch, switchPlace] as [string, string]] : []),
+    ...(place ? [[noticeLetters.where, place] as [string, string]] : []),
   ];
 }
 
@@ -129,11 +129,11 @@ function hazardParts(telling: Telling, person: RecipientRow): LetterParts {
   const number = event.site.contactPhone || person.organisationPhone;
   const zone = person.timeZone;
   const figures: [string, string][] = [
-    ['Site', event.site.name],
+    [noticeLetters.site, event.site.name],
     ...(cause && cause.units.length > 0
-      ? [['Strings', stringsInWords(cause.units)] as [string, string]]
+      ? [[noticeLetters.strings, stringsInWords(cause.units)] as [string, string]]
       : []),
-    ['Since', fullTime(cause?.since ?? event.at, zone)],
+    [noticeLetters.since, fullTime(cause?.since ?? event.at, zone)],
     ...callWhom(telling, person),
   ];
   return {
@@ -142,21 +142,17 @@ function hazardParts(telling: Telling, person: RecipientRow): LetterParts {
     hazard: !over,
     paragraphs: [
       words.body,
-      ...(over
-        ? []
-        : [
-            `Call the site now${number ? '' : ': its number is not entered in Wakeline'}. Nobody works on these strings until a licensed person has isolated them and proved them dead.`,
-          ]),
+      ...(over ? [] : [noticeLetters.callTheSiteNow(number)]),
       ...(cause?.evidence && !over ? [cause.evidence] : []),
     ],
-    ...(number && !over && { call: { words: 'Call the site', number } }),
+    ...(number && !over && { call: { words: noticeLetters.callTheSite, number } }),
     caution: CAUTION,
     figures,
     action: {
-      words: over ? 'See what happened' : 'Acknowledge and call the site',
+      words: over ? noticeLetters.seeWhatHappened : noticeLetters.acknowledgeAndCallThe,
       href: publicUrl() + telling.href,
     },
-    footer: `You get this letter because you look after sites for ${person.organisationName}. ${KINDS.hazard.fixed ?? ''} It can’t be switched off.`,
+    footer: noticeLetters.youGetThisLetter(person.organisationName, KINDS.hazard.fixed),
   };
 }
 
@@ -166,23 +162,37 @@ function commonParts(telling: Telling, person: RecipientRow): LetterParts {
     cause && told.phase === 'comes' ? adviceFor(cause.kind, cause.sharedPart?.kind ?? null) : null;
   const customer = person.role === 'customer';
   const figures: [string, string][] = [
-    ['Site', event.site.name],
+    [noticeLetters.site, event.site.name],
     ...(cause && cause.units.length > 0
-      ? [['Strings', stringsInWords(cause.units)] as [string, string]]
+      ? [[noticeLetters.strings, stringsInWords(cause.units)] as [string, string]]
       : []),
-    [told.phase === 'comes' && cause ? 'Since' : 'When', fullTime(cause?.since ?? event.at, person.timeZone)],
-    ...(cause?.lossWhDay ? [['Costs about', `${energy(cause.lossWhDay)} a day`] as [string, string]] : []),
+    [
+      told.phase === 'comes' && cause ? noticeLetters.since : noticeLetters.when,
+      fullTime(cause?.since ?? event.at, person.timeZone),
+    ],
+    ...(cause?.lossWhDay
+      ? [[noticeLetters.costsAbout, noticeLetters.lossWhDayADay(cause.lossWhDay)] as [string, string]]
+      : []),
   ];
   return {
     greeting: greetingOf(person),
     finding: `${event.site.name}: ${words.headline}`,
-    paragraphs: [words.body, ...(advice ? [advice.today, `On the ladder: ${advice.ladder}`] : [])].filter(
-      Boolean,
-    ),
+    paragraphs: [
+      words.body,
+      ...(advice ? [advice.today, noticeLetters.onTheLadder(advice.ladder)] : []),
+    ].filter(Boolean),
     ...(advice && { caution: CAUTION }),
     figures,
-    action: { words: customer ? 'See your site' : 'Look at it', href: publicUrl() + telling.href },
-    footer: `You get this letter because ${customer ? `you see ${event.site.name} in Wakeline` : `you look after sites for ${person.organisationName}`} and chose to be told of “${KINDS[told.kind].name}” at once.`,
+    action: {
+      words: customer ? noticeLetters.seeYourSite : noticeLetters.lookAtIt,
+      href: publicUrl() + telling.href,
+    },
+    footer: noticeLetters.youGetThisLetterBecause(
+      customer,
+      event.site.name,
+      person.organisationName,
+      KINDS[told.kind].name,
+    ),
   };
 }
 
@@ -192,12 +202,11 @@ export function wayOutOf(
   of: LetterOf,
 ): { url: string; wayOut: { words: string; href: string } } {
   const url = unsubscribeUrl(person, of);
-  return { url, wayOut: { words: 'No more letters like this one', href: url } };
+  return { url, wayOut: { words: noticeLetters.noMoreLettersLike, href: url } };
 }
 
 /** The link to one's choices, in words for the foot of a letter. */
-export const choicesLine = (): string =>
-  `What you are told of, and when: ${publicUrl()}${paths.accountNotices()}`;
+export const choicesLine = (): string => noticeLetters.whatYouAreTold(publicUrl(), paths.accountNotices());
 
 /** Puts the letter about one thing into the outbox. @returns whether it is new */
 export async function writeLetter(
@@ -226,7 +235,7 @@ export async function writeLetter(
     kind: told.kind,
     eventKey,
     to: { address: person.email, name: person.name },
-    subject: `${urgent ? 'NOT SHUTTING DOWN: ' : ''}${event.site.name}: ${words.headline}`,
+    subject: `${urgent ? noticeLetters.notSHUTTINGDOWN : ''}${event.site.name}: ${words.headline}`,
     text,
     html,
     pictureId: picture?.id ?? null,

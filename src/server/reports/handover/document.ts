@@ -5,6 +5,7 @@ import type { PackData, PackTest } from './data';
 import { equipment, operation } from './equipment';
 import { installChecks, openPoints, testResults } from './results';
 import { layout, people, singleLine, systemData } from './sections';
+import { papersHandoverDocument } from '../../../words/papers-handover';
 
 export interface PackAbout {
   version: number;
@@ -15,15 +16,15 @@ export interface PackAbout {
 }
 
 const CONTENTS = [
-  'System data',
-  'People',
-  'Single-line description',
-  'String layout with serials',
-  'Equipment',
-  'Operation and maintenance',
-  'Test results',
-  'Install checks',
-  'Open points',
+  papersHandoverDocument.systemData,
+  papersHandoverDocument.people,
+  papersHandoverDocument.singleLineDescription,
+  papersHandoverDocument.stringLayoutWithSerials,
+  papersHandoverDocument.equipment,
+  papersHandoverDocument.operationAndMaintenance,
+  papersHandoverDocument.testResults,
+  papersHandoverDocument.installChecks,
+  papersHandoverDocument.openPoints,
 ];
 
 /**
@@ -38,10 +39,14 @@ export async function handoverPdf(
   const { site } = data;
   const date = longDate(about.at, site.timeZone);
   const paper = new Paper(
-    { title: `${site.name}: handover pack ${about.version}`, author: site.organisation.name, at: about.at },
     {
-      head: `${site.name} · handover pack, version ${about.version} · ${date}`,
-      foot: `Fingerprint of the data (SHA-256) ${about.fingerprint}`,
+      title: papersHandoverDocument.handoverPack(site.name, about.version),
+      author: site.organisation.name,
+      at: about.at,
+    },
+    {
+      head: papersHandoverDocument.handoverPackVersion(site.name, about.version, date),
+      foot: papersHandoverDocument.fingerprintOfTheData(about.fingerprint),
     },
   );
   cover(paper, data, about, date);
@@ -61,22 +66,22 @@ function cover(paper: Paper, { site, strings }: PackData, about: PackAbout, date
   paper.space(40);
   staircaseMark(paper);
   paper.space(20);
-  paper.text('Handover pack', { size: 13, colour: PAPER.ink2 });
+  paper.text(papersHandoverDocument.handoverPack2, { size: 13, colour: PAPER.ink2 });
   paper.text(site.name, { size: 30, weight: 600, leading: 1.15 });
   if (site.place) paper.text(site.place, { size: 13, colour: PAPER.ink2 });
   paper.space(24);
   paper.facts([
-    ['Version', String(about.version)],
-    ['Date', date],
-    ['Made by', `${about.madeBy}, ${site.organisation.name}`],
-    ['Units, strings', `${strings.reduce((n, s) => n + s.slots.length, 0)}, ${strings.length}`],
-    ...(about.remark ? ([['Remark', about.remark]] as const) : []),
+    [papersHandoverDocument.version, String(about.version)],
+    [papersHandoverDocument.date, date],
+    [papersHandoverDocument.madeBy, `${about.madeBy}, ${site.organisation.name}`],
+    [
+      papersHandoverDocument.unitsStrings,
+      `${strings.reduce((n, s) => n + s.slots.length, 0)}, ${strings.length}`,
+    ],
+    ...(about.remark ? ([[papersHandoverDocument.remark, about.remark]] as const) : []),
   ]);
   paper.space(8);
-  paper.text(
-    'Made from what people recorded on site and what loggers reported. The fingerprint at the foot of every page belongs to that data: a pack with another fingerprint says something else. The headings follow IEC 62446-1; whether they satisfy it here is for the authority having jurisdiction to say.',
-    { size: 9, colour: PAPER.ink2 },
-  );
+  paper.text(papersHandoverDocument.madeFromWhatPeople, { size: 9, colour: PAPER.ink2 });
   paper.space(16);
   CONTENTS.forEach((name, i) => paper.text(`${i + 1}   ${name}`, { size: 10.5, leading: 1.15 }));
   paper.newPage();

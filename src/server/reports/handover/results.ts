@@ -6,30 +6,31 @@ import { longDate } from '../../../drawings/times';
 import type { Paper } from '../pdf/paper';
 import type { PackData, PackTest } from './data';
 import { when } from './sections';
+import { papersHandoverResults } from '../../../words/papers-handover';
 
 /** The second half of the papers: what was measured, looked at, tested, and what stands open. */
 
 const STAGES: Record<string, string> = {
-  before_energising: 'before energising',
-  after_keep_alive: 'after keep-alive',
-  after_roll_call: 'after the roll call',
+  before_energising: papersHandoverResults.beforeEnergising,
+  after_keep_alive: papersHandoverResults.afterKeepAlive,
+  after_roll_call: papersHandoverResults.afterTheRollCall,
 };
 const OUTCOMES: Record<string, string> = {
-  as_expected: 'as expected',
-  finding: 'not as expected',
-  cant_tell: 'can’t tell: more than one explanation fits',
-  proves_nothing: 'proves nothing in this light',
+  as_expected: papersHandoverResults.asExpected,
+  finding: papersHandoverResults.notAsExpected,
+  cant_tell: papersHandoverResults.cantTellMoreThan,
+  proves_nothing: papersHandoverResults.provesNothingInThis,
 };
 export const RESULTS: Record<string, string> = {
   passed: 'passed',
-  failed: 'not passed',
-  consistent: 'consistent: reports agree, not measured by instrument',
-  not_witnessed: 'not witnessed',
+  failed: papersHandoverResults.notPassed,
+  consistent: papersHandoverResults.consistentReportsAgreeNot,
+  not_witnessed: papersHandoverResults.notWitnessed,
 };
 const CHECK_RESULTS: Record<string, string> = {
   pass: 'pass',
   fail: 'FAIL',
-  not_applicable: 'not applicable',
+  not_applicable: papersHandoverResults.notApplicable,
 };
 const BY_KEY = new Map<string, CheckDefinition>(CHECKS.map((c) => [c.key, c]));
 const nameOf = (key: string): string => BY_KEY.get(key)?.name ?? key.replaceAll('_', ' ');
@@ -46,7 +47,7 @@ export function figureWords(check: PackData['checks'][number], data: PackData): 
       if (figure?.kind === 'choice')
         return `${name}: ${figure.options.find((o) => o.value === String(value))?.words ?? String(value)}`;
       if (figure?.kind === 'connector')
-        return `${name}: ${data.connectorTypes.find((c) => c.id === value)?.name ?? 'a type that is no longer listed'}`;
+        return `${name}: ${data.connectorTypes.find((c) => c.id === value)?.name ?? papersHandoverResults.aTypeThatIs}`;
       return `${name}: ${String(value)}`;
     })
     .join('; ');
@@ -55,11 +56,8 @@ export function figureWords(check: PackData['checks'][number], data: PackData): 
 const ORDER = ['positive_to_negative', 'positive_to_earth', 'negative_to_earth'];
 
 function readings(paper: Paper, data: PackData): void {
-  paper.heading('Polarity and open-circuit voltages', 2);
-  paper.text(
-    'Volts at the home run, string open and isolated. Expected: what should be at that stage, two standard deviations to either side. A minus sign in the first column means reversed.',
-    { size: 8.5, colour: PAPER.ink2 },
-  );
+  paper.heading(papersHandoverResults.polarityAndOpenCircuit, 2);
+  paper.text(papersHandoverResults.voltsAtTheHome, { size: 8.5, colour: PAPER.ink2 });
   const groups = new Map<string, PackData['readings']>();
   for (const r of data.readings) {
     const key = `${r.string}\n${r.stage}`;
@@ -67,14 +65,14 @@ function readings(paper: Paper, data: PackData): void {
   }
   paper.table(
     [
-      { header: 'String', share: 1.1 },
-      { header: 'Stage', share: 1.8 },
-      { header: '+ to −', share: 1.2, align: 'right' },
-      { header: 'Expected', share: 1.9, align: 'right' },
-      { header: '+ to earth', share: 1.2, align: 'right' },
-      { header: '− to earth', share: 1.2, align: 'right' },
-      { header: 'Finding', share: 3.4 },
-      { header: 'Taken by', share: 2.2 },
+      { header: papersHandoverResults.string, share: 1.1 },
+      { header: papersHandoverResults.stage, share: 1.8 },
+      { header: papersHandoverResults.to, share: 1.2, align: 'right' },
+      { header: papersHandoverResults.expected, share: 1.9, align: 'right' },
+      { header: papersHandoverResults.toEarth, share: 1.2, align: 'right' },
+      { header: papersHandoverResults.toEarth2, share: 1.2, align: 'right' },
+      { header: papersHandoverResults.finding, share: 3.4 },
+      { header: papersHandoverResults.takenBy, share: 2.2 },
     ],
     [...groups.values()].map((group) => {
       const of = (kind: string) => group.find((r) => r.kind === kind);
@@ -86,15 +84,17 @@ function readings(paper: Paper, data: PackData): void {
         STAGES[group[0]?.stage ?? ''] ?? '',
         volts(main?.voltage),
         finding?.expectedLowV != null && finding.expectedHighV != null
-          ? `${number(finding.expectedLowV, 1)} to ${number(finding.expectedHighV, 1)} V`
+          ? papersHandoverResults.expectedLowVToExpectedHighVV(finding.expectedLowV, finding.expectedHighV)
           : '',
         volts(positive?.voltage),
         volts(negative?.voltage),
-        finding ? `${OUTCOMES[finding.outcome] ?? finding.outcome}. ${finding.headline}` : 'not judged',
+        finding
+          ? `${OUTCOMES[finding.outcome] ?? finding.outcome}. ${finding.headline}`
+          : papersHandoverResults.notJudged,
         newest ? `${newest.person}, ${longDate(newest.at, data.site.timeZone)}` : '',
       ];
     }),
-    'No reading is recorded.',
+    papersHandoverResults.noReadingIsRecorded,
   );
 }
 
@@ -108,9 +108,9 @@ function measuredChecks(paper: Paper, data: PackData): void {
     if (source) paper.text(source, { size: 8.5, colour: PAPER.ink2 });
     paper.table(
       [
-        { header: 'String', share: 1 },
-        { header: 'Result', share: 1.3 },
-        { header: 'Figures', share: 4 },
+        { header: papersHandoverResults.string, share: 1 },
+        { header: papersHandoverResults.result, share: 1.3 },
+        { header: papersHandoverResults.figures, share: 4 },
         { header: 'By', share: 2.2 },
       ],
       rows.map((c) => [
@@ -119,56 +119,58 @@ function measuredChecks(paper: Paper, data: PackData): void {
         [figureWords(c, data), c.reason, c.note].filter(Boolean).join('. '),
         `${c.person}, ${longDate(c.at, data.site.timeZone)}`,
       ]),
-      'None is recorded.',
+      papersHandoverResults.noneIsRecorded,
     );
   }
 }
 
 function rollCall(paper: Paper, data: PackData): void {
-  paper.heading('Functional test: roll call', 2);
+  paper.heading(papersHandoverResults.functionalTestRollCall, 2);
   for (const run of data.rollCalls)
     paper.text(
-      `Started ${when(run.startedAt, data)} by ${run.startedBy}, on site: ${run.personOnSite}; ${run.stoppedAt ? `stopped ${when(run.stoppedAt, data)}` : 'still running'}.`,
+      papersHandoverResults.rollCallRun(
+        when(run.startedAt, data),
+        run.startedBy,
+        run.personOnSite,
+        run.stoppedAt && when(run.stoppedAt, data),
+      ),
       { size: 9 },
     );
   paper.table(
     [
-      { header: 'String', share: 1 },
-      { header: 'Heard', share: 1, align: 'right' },
-      { header: 'On the as-built', share: 1, align: 'right' },
-      { header: 'Weakest signal', share: 1, align: 'right' },
+      { header: papersHandoverResults.string, share: 1 },
+      { header: papersHandoverResults.heard, share: 1, align: 'right' },
+      { header: papersHandoverResults.onTheAsBuilt, share: 1, align: 'right' },
+      { header: papersHandoverResults.weakestSignal, share: 1, align: 'right' },
     ],
     data.heard.map((h) => [h.string, number(h.heard), number(h.roster), quantity(h.weakest, 'dBm')]),
-    'No unit of this site can answer a roll call.',
+    papersHandoverResults.noUnitOfThis,
   );
   if (data.heardUnknown.length > 0)
-    paper.text(`Heard, and on no slot: ${data.heardUnknown.join(', ')}.`, { size: 9 });
+    paper.text(papersHandoverResults.heardAndOnNo(data.heardUnknown.join(', ')), { size: 9 });
 }
 
 function shutdownTests(paper: Paper, data: PackData, tests: readonly PackTest[]): void {
-  paper.heading('Shutdown tests', 2);
-  paper.text(
-    'Only a rated instrument at the home run’s inverter end witnesses a pass. What units report alone is called consistent.',
-    { size: 8.5, colour: PAPER.ink2 },
-  );
-  if (tests.length === 0) paper.text('No shutdown test is on record.');
+  paper.heading(papersHandoverResults.shutdownTests, 2);
+  paper.text(papersHandoverResults.onlyARatedInstrument, { size: 8.5, colour: PAPER.ink2 });
+  if (tests.length === 0) paper.text(papersHandoverResults.noShutdownTestIs);
   for (const test of tests) {
     paper.heading(`${test.zone}: ${RESULTS[test.result] ?? test.result}`, 3);
     paper.text(test.headline, { size: 9.5 });
     paper.facts([
       ['At', when(test.at, data)],
-      ['Initiator', test.initiator],
+      [papersHandoverResults.initiator, test.initiator],
       ...test.facts,
-      ['Signed by', test.signedBy],
-      ['Fingerprint of the test', test.fingerprint],
+      [papersHandoverResults.signedBy, test.signedBy],
+      [papersHandoverResults.fingerprintOfTheTest, test.fingerprint],
     ]);
     paper.table(
       [
-        { header: 'String', share: 1 },
-        { header: 'Result', share: 2 },
-        { header: 'Highest', share: 1, align: 'right' },
-        { header: 'Slowest unit', share: 1.6, align: 'right' },
-        { header: 'What was seen', share: 5 },
+        { header: papersHandoverResults.string, share: 1 },
+        { header: papersHandoverResults.result, share: 2 },
+        { header: papersHandoverResults.highest, share: 1, align: 'right' },
+        { header: papersHandoverResults.slowestUnit, share: 1.6, align: 'right' },
+        { header: papersHandoverResults.whatWasSeen, share: 5 },
       ],
       test.strings.map((s) => [s.name, RESULTS[s.result] ?? s.result, volts(s.highestV), s.slowest, s.words]),
     );
@@ -176,7 +178,7 @@ function shutdownTests(paper: Paper, data: PackData, tests: readonly PackTest[])
 }
 
 export function testResults(paper: Paper, data: PackData, tests: readonly PackTest[]): void {
-  paper.heading('7  Test results', 1);
+  paper.heading(papersHandoverResults.n7TestResults, 1);
   readings(paper, data);
   measuredChecks(paper, data);
   rollCall(paper, data);
@@ -187,7 +189,7 @@ const SHORT: Record<string, string> = { pass: 'pass', fail: 'FAIL', not_applicab
 const PHOTO = { width: 112, height: 84, gap: 10 };
 
 export function installChecks(paper: Paper, data: PackData, photos: ReadonlyMap<string, Buffer>): void {
-  paper.heading('8  Install checks', 1);
+  paper.heading(papersHandoverResults.n8InstallChecks, 1);
   const signed = new Map(data.signOffs.map((s) => [s.string, s]));
   for (const s of data.strings) {
     const checks = data.checks.filter((c) => c.string === s.name);
@@ -195,15 +197,15 @@ export function installChecks(paper: Paper, data: PackData, photos: ReadonlyMap<
     paper.heading(s.name, 2);
     paper.text(
       sign
-        ? `Signed by ${sign.person}, ${when(sign.at, data)}${sign.stale ? '; recorded anew since, and not signed again' : ''}.`
-        : 'Not signed.',
+        ? papersHandoverResults.signedBy2(sign.person, when(sign.at, data), sign.stale)
+        : papersHandoverResults.notSigned,
       { size: 9, weight: sign && !sign.stale ? 400 : 600 },
     );
     paper.table(
       [
-        { header: 'Check', share: 2.2 },
-        { header: 'Result', share: 0.8 },
-        { header: 'Figures, reason, note', share: 4 },
+        { header: papersHandoverResults.check, share: 2.2 },
+        { header: papersHandoverResults.result, share: 0.8 },
+        { header: papersHandoverResults.figuresReasonNote, share: 4 },
         { header: 'By', share: 2 },
       ],
       checks.map((c) => [
@@ -212,7 +214,7 @@ export function installChecks(paper: Paper, data: PackData, photos: ReadonlyMap<
         [figureWords(c, data), c.reason, c.note].filter(Boolean).join('. '),
         `${c.person}, ${longDate(c.at, data.site.timeZone)}`,
       ]),
-      'No check is recorded.',
+      papersHandoverResults.noCheckIsRecorded,
     );
     pictures(
       paper,
@@ -257,25 +259,24 @@ function pictures(
 }
 
 export function openPoints(paper: Paper, data: PackData, design: readonly string[]): void {
-  paper.heading('9  Open points', 1);
-  if (data.gaps.length === 0 && design.length === 0)
-    paper.text('None. Every step was done before the handover.');
+  paper.heading(papersHandoverResults.n9OpenPoints, 1);
+  if (data.gaps.length === 0 && design.length === 0) paper.text(papersHandoverResults.noneEveryStepWas);
   if (data.gaps.length > 0) {
-    paper.heading('Accepted as they are', 2);
+    paper.heading(papersHandoverResults.acceptedAsTheyAre, 2);
     paper.table(
       [
-        { header: 'Point', share: 3 },
-        { header: 'Reason', share: 4 },
-        { header: 'Accepted by', share: 2 },
+        { header: papersHandoverResults.point, share: 3 },
+        { header: papersHandoverResults.reason, share: 4 },
+        { header: papersHandoverResults.acceptedBy, share: 2 },
       ],
       data.gaps.map((g) => [g.words, g.reason, `${g.person}, ${longDate(g.at, data.site.timeZone)}`]),
     );
   }
   if (design.length > 0) {
-    paper.heading('Design checks that are exceeded', 2);
+    paper.heading(papersHandoverResults.designChecksThatAre, 2);
     for (const words of design) paper.text(`–  ${words}`, { size: 9.5 });
   }
   const other = data.photos.filter((p) => p.string === null);
   if (other.length > 0)
-    paper.text(`${other.length} more photos of the site are kept with it.`, { size: 9, colour: PAPER.ink2 });
+    paper.text(papersHandoverResults.morePhotosOfThe(other.length), { size: 9, colour: PAPER.ink2 });
 }

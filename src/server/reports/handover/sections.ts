@@ -3,19 +3,20 @@ import { number, quantity } from '../../../drawings/numbers';
 import { fullTime, longDate } from '../../../drawings/times';
 import type { Paper } from '../pdf/paper';
 import type { PackData } from './data';
+import { papersHandoverSections } from '../../../words/papers-handover';
 
 /** The first half of the papers: what the system is, who worked on it, how it is laid out. */
 
 export const RULE_SETS: Record<string, string> = {
-  rapid_shutdown_30s: 'rapid shutdown, 30 s (NEC 690.12, 2017 and later editions)',
-  rapid_shutdown_10s: 'rapid shutdown, 10 s (the earlier edition)',
-  hazard_control: 'a listed PV hazard control system',
+  rapid_shutdown_30s: papersHandoverSections.rapidShutdown30S,
+  rapid_shutdown_10s: papersHandoverSections.rapidShutdown10S,
+  hazard_control: papersHandoverSections.aListedPVHazard,
   none: 'none',
 };
 const STRUCTURES: Record<string, string> = {
-  one_or_two_family_dwelling: 'one- or two-family dwelling',
-  other_building: 'other building',
-  not_on_building: 'not on a building',
+  one_or_two_family_dwelling: papersHandoverSections.oneOrTwoFamily,
+  other_building: papersHandoverSections.otherBuilding,
+  not_on_building: papersHandoverSections.notOnABuilding,
 };
 const KINDS: Record<string, string> = {
   shutdown_only: 'shutdown-only',
@@ -25,7 +26,7 @@ const KINDS: Record<string, string> = {
 export const kindWords = (kind: string): string => KINDS[kind] ?? kind;
 
 const temperature = (value: number | null): string =>
-  value === null ? 'not entered' : quantity(value, '°C');
+  value === null ? papersHandoverSections.notEntered : quantity(value, '°C');
 
 /** Power of the modules at STC, W. */
 export function moduleCapacity({ strings, moduleTypes }: PackData): number {
@@ -38,40 +39,53 @@ export function moduleCapacity({ strings, moduleTypes }: PackData): number {
 
 export function systemData(paper: Paper, data: PackData): void {
   const { site } = data;
-  paper.heading('1  System data', 1);
+  paper.heading(papersHandoverSections.n1SystemData, 1);
   const units = data.strings.reduce((n, s) => n + s.slots.length, 0);
   paper.facts([
-    ['Site', site.name],
-    ['Place', site.place],
+    [papersHandoverSections.site, site.name],
+    [papersHandoverSections.place, site.place],
     [
-      'Coordinates',
-      `${site.latitude.toFixed(4)}°, ${site.longitude.toFixed(4)}°, ${number(site.altitude)} m above sea level`,
+      papersHandoverSections.coordinates,
+      papersHandoverSections.aboveSeaLevel(
+        site.latitude.toFixed(4),
+        site.longitude.toFixed(4),
+        site.altitude,
+      ),
     ],
-    ['Times in these papers', site.timeZone],
-    ['Structure', STRUCTURES[site.structure] ?? site.structure],
-    ['Shutdown rule set', RULE_SETS[site.ruleSet] ?? site.ruleSet],
-    ['Shutdown switch', site.switchPlace],
+    [papersHandoverSections.timesInThesePapers, site.timeZone],
+    [papersHandoverSections.structure, STRUCTURES[site.structure] ?? site.structure],
+    [papersHandoverSections.shutdownRuleSet, RULE_SETS[site.ruleSet] ?? site.ruleSet],
+    [papersHandoverSections.shutdownSwitch, site.switchPlace],
     [
-      'Modules',
-      `${number(units)}, ${quantity(moduleCapacity(data) / 1000, 'kW', 1)} at standard test conditions`,
+      papersHandoverSections.modules,
+      papersHandoverSections.atStandardTestConditions(units, moduleCapacity(data)),
     ],
-    ['Strings', number(data.strings.length)],
+    [papersHandoverSections.strings, number(data.strings.length)],
     [
-      'Inverters',
-      `${number(data.inverters.length)}, ${quantity(data.inverters.reduce((n, i) => n + i.acPowerMax, 0) / 1000, 'kW', 1)} AC`,
+      papersHandoverSections.inverters,
+      papersHandoverSections.invertersReduceAC(
+        data.inverters.length,
+        data.inverters.reduce((n, i) => n + i.acPowerMax, 0),
+      ),
     ],
     [
-      'Design temperatures',
-      `coldest ${temperature(site.temperatureMin)}, hottest air ${temperature(site.temperatureMax)}`,
+      papersHandoverSections.designTemperatures,
+      papersHandoverSections.coldestHottestAir(
+        temperature(site.temperatureMin),
+        temperature(site.temperatureMax),
+      ),
     ],
-    ['Entered on', longDate(site.createdAt, site.timeZone)],
-    ['In service since', site.switchedOnOn ? longDate(`${site.switchedOnOn}T12:00:00Z`, 'UTC') : ''],
+    [papersHandoverSections.enteredOn, longDate(site.createdAt, site.timeZone)],
+    [
+      papersHandoverSections.inServiceSince,
+      site.switchedOnOn ? longDate(`${site.switchedOnOn}T12:00:00Z`, 'UTC') : '',
+    ],
   ]);
   paper.table(
     [
-      { header: 'Plane', share: 2 },
-      { header: 'Tilt', share: 1, align: 'right' },
-      { header: 'Azimuth, clockwise from north', share: 2, align: 'right' },
+      { header: papersHandoverSections.plane, share: 2 },
+      { header: papersHandoverSections.tilt, share: 1, align: 'right' },
+      { header: papersHandoverSections.azimuthClockwiseFromNorth, share: 2, align: 'right' },
     ],
     data.planes.map((p) => [p.name, quantity(p.tilt, '°'), quantity(p.azimuth, '°')]),
   );
@@ -79,17 +93,20 @@ export function systemData(paper: Paper, data: PackData): void {
 
 export function people(paper: Paper, data: PackData): void {
   const { site } = data;
-  paper.heading('2  People', 1);
+  paper.heading(papersHandoverSections.n2People, 1);
   paper.facts([
-    ['Commissioned by', site.organisation.name],
-    ['Telephone', site.organisation.phone ?? ''],
-    ['Contact for the site', [site.contactName, site.contactPhone].filter(Boolean).join(', ')],
+    [papersHandoverSections.commissionedBy, site.organisation.name],
+    [papersHandoverSections.telephone, site.organisation.phone ?? ''],
+    [
+      papersHandoverSections.contactForTheSite,
+      [site.contactName, site.contactPhone].filter(Boolean).join(', '),
+    ],
   ]);
   paper.table(
     [
-      { header: 'Person', share: 2 },
-      { header: 'Role', share: 1 },
-      { header: 'Recorded', share: 4 },
+      { header: papersHandoverSections.person, share: 2 },
+      { header: papersHandoverSections.role, share: 1 },
+      { header: papersHandoverSections.recorded, share: 4 },
     ],
     data.people.map((p) => [p.name, p.role, p.did.join(', ')]),
   );
@@ -98,10 +115,8 @@ export function people(paper: Paper, data: PackData): void {
 /** Inverters left, their inputs as branches, the strings that hang on each. */
 export function singleLine(paper: Paper, data: PackData): void {
   const first = data.inverters[0]?.inputs.filter((i) => i.strings.length > 0).length ?? 0;
-  paper.heading('3  Single-line description', 1, 80 + first * 24);
-  paper.text(
-    'Every string ends in a home run at the inverter input named here; strings named together share the input and its voltage.',
-  );
+  paper.heading(papersHandoverSections.n3SingleLineDescription, 1, 80 + first * 24);
+  paper.text(papersHandoverSections.everyStringEndsIn);
   const units = new Map(data.strings.map((s) => [s.name, s]));
   for (const inverter of data.inverters) {
     const rows = inverter.inputs.filter((i) => i.strings.length > 0);
@@ -117,7 +132,7 @@ export function singleLine(paper: Paper, data: PackData): void {
         .stroke();
       paper.setAt(inverter.name, x + 8, y + 10, box.width - 16, { size: 9.5, weight: 600 });
       paper.setAt(
-        [inverter.type ?? '', `${quantity(inverter.acPowerMax / 1000, 'kW', 1)} AC`]
+        [inverter.type ?? '', papersHandoverSections.acPowerMaxAC(inverter.acPowerMax)]
           .filter(Boolean)
           .join('\n'),
         x + 8,
@@ -134,35 +149,40 @@ export function singleLine(paper: Paper, data: PackData): void {
           .strokeColor(PAPER.ink)
           .stroke();
         pen.circle(x + box.width + 56, at, 2.2).fill(PAPER.ink);
-        paper.setAt(`input ${input.number}`, x + box.width + 6, at - 11, 50, {
+        paper.setAt(papersHandoverSections.inputInput(input.number), x + box.width + 6, at - 11, 50, {
           size: 7.5,
           colour: PAPER.ink2,
         });
         const strings = input.strings
           .map((name) => {
             const s = units.get(name);
-            return s ? `${name} (${s.slots.length} units, ${kindWords(s.kind)})` : name;
+            return s
+              ? papersHandoverSections.nameSlotsUnitsKind(name, s.slots.length, kindWords(s.kind))
+              : name;
           })
           .join('   ');
         paper.setAt(strings, x + box.width + 66, at - 6, paper.width - box.width - 66, { size: 8.5 });
       });
       if (rows.length === 0)
-        paper.setAt('no string', x + box.width + 14, y + 14, 120, { size: 8.5, colour: PAPER.ink2 });
+        paper.setAt(papersHandoverSections.noString, x + box.width + 14, y + 14, 120, {
+          size: 8.5,
+          colour: PAPER.ink2,
+        });
     });
     if (spare > 0 && rows.length > 0)
-      paper.text(`${inverter.name}: ${spare} ${spare === 1 ? 'input is' : 'inputs are'} free.`, {
+      paper.text(papersHandoverSections.inverterSpareSpareFree(inverter.name, spare), {
         size: 8.5,
         colour: PAPER.ink2,
       });
   }
-  paper.heading('Shutdown: initiators, zones and transmitters', 2);
+  paper.heading(papersHandoverSections.shutdownInitiatorsZonesAnd, 2);
   paper.table(
     [
-      { header: 'Initiator', share: 2 },
-      { header: 'Where', share: 3 },
-      { header: 'Zone', share: 2 },
-      { header: 'Strings', share: 3 },
-      { header: 'Transmitters', share: 3 },
+      { header: papersHandoverSections.initiator, share: 2 },
+      { header: papersHandoverSections.where, share: 3 },
+      { header: papersHandoverSections.zone, share: 2 },
+      { header: papersHandoverSections.strings, share: 3 },
+      { header: papersHandoverSections.transmitters, share: 3 },
     ],
     data.zones.map((z) => [
       z.initiator,
@@ -172,12 +192,12 @@ export function singleLine(paper: Paper, data: PackData): void {
       z.transmitters.map((t) => `${t.name}: ${t.strings.join(', ')}`).join('\n'),
     ]),
   );
-  paper.heading('Loggers and gateways', 2);
+  paper.heading(papersHandoverSections.loggersAndGateways, 2);
   paper.table(
     [
-      { header: 'Logger', share: 2 },
-      { header: 'Firmware', share: 1 },
-      { header: 'Gateways heard through it', share: 4 },
+      { header: papersHandoverSections.logger, share: 2 },
+      { header: papersHandoverSections.firmware, share: 1 },
+      { header: papersHandoverSections.gatewaysHeardThroughIt, share: 4 },
     ],
     data.loggers.map((l) => [l.serial, l.firmware ?? '', l.gateways.join(', ')]),
   );
@@ -203,7 +223,7 @@ function roof(paper: Paper, data: PackData): void {
     MOST_ROOF_HEIGHT / Math.max(1, north - south),
   );
   const height = (north - south) * scale + 34;
-  paper.heading('Roof plan', 2, height + 20);
+  paper.heading(papersHandoverSections.roofPlan, 2, height + 20);
   paper.figure(height, (left, top) => {
     const { pen } = paper;
     const at = (p: { x: number; y: number }) =>
@@ -248,7 +268,7 @@ function roof(paper: Paper, data: PackData): void {
       .fill(PAPER.ink);
     paper.setAt('N', x + 9, y + 13, 10, { size: 7 });
   });
-  paper.text('Seen from above; each path begins at its string’s negative end, a tick is a module.', {
+  paper.text(papersHandoverSections.seenFromAboveEach, {
     size: 8.5,
     colour: PAPER.ink2,
   });
@@ -258,18 +278,18 @@ function roof(paper: Paper, data: PackData): void {
 const SLOTS_A_ROW = 4;
 
 export function layout(paper: Paper, data: PackData): void {
-  paper.heading('4  String layout with serials', 1, data.site.outline ? MOST_ROOF_HEIGHT : 120);
+  paper.heading(papersHandoverSections.n4StringLayoutWith, 1, data.site.outline ? MOST_ROOF_HEIGHT : 120);
   roof(paper, data);
   for (const s of data.strings) {
     paper.heading(s.name, 2);
     const facts = [
-      `${s.slots.length} units, ${kindWords(s.kind)}, ${s.unitType}`,
-      `plane ${s.plane}`,
-      `${s.inverter}, input ${s.input}`,
-      `zone ${s.zone}`,
-      s.transmitters.length > 0 ? `hears ${s.transmitters.join(', ')}` : '',
-      s.logger ? `logger ${s.logger}` : '',
-      s.leavesArray ? 'home run leaves the array' : 'home run stays inside the array',
+      papersHandoverSections.slotsUnitsKindUnitType(s.slots.length, kindWords(s.kind), s.unitType),
+      papersHandoverSections.planePlane(s.plane),
+      papersHandoverSections.inverterInputInput(s.inverter, s.input),
+      papersHandoverSections.zoneZone(s.zone),
+      s.transmitters.length > 0 ? papersHandoverSections.hearsTransmitters(s.transmitters.join(', ')) : '',
+      s.logger ? papersHandoverSections.loggerLogger(s.logger) : '',
+      s.leavesArray ? papersHandoverSections.homeRunLeavesThe : papersHandoverSections.homeRunStaysInside,
     ];
     paper.text(facts.filter(Boolean).join(' · '), { size: 8.5, colour: PAPER.ink2 });
     const rows: string[][] = [];
@@ -278,18 +298,18 @@ export function layout(paper: Paper, data: PackData): void {
         Array.from({ length: SLOTS_A_ROW }, (_, k) => {
           const slot = s.slots[i + k];
           if (!slot) return '';
-          return `${slot.position}   ${slot.serial ?? 'no unit'}${slot.place ? `\n${slot.place}` : ''}`;
+          return `${slot.position}   ${slot.serial ?? papersHandoverSections.noUnit}${slot.place ? `\n${slot.place}` : ''}`;
         }),
       );
     const types = [...new Set(s.slots.map((slot) => slot.moduleType))];
     paper.table(
       Array.from({ length: SLOTS_A_ROW }, (_, k) => ({
-        header: k === 0 ? 'Position and serial' : '',
+        header: k === 0 ? papersHandoverSections.positionAndSerial : '',
         share: 1,
       })),
       rows,
     );
-    paper.text(`Modules: ${types.join(', ')}.`, { size: 8.5, colour: PAPER.ink2 });
+    paper.text(papersHandoverSections.modulesTypes(types.join(', ')), { size: 8.5, colour: PAPER.ink2 });
   }
 }
 
