@@ -84,7 +84,7 @@ export function scoreMembership(run: OutputRun, reports: Reports, score: Current
 }
 
 /** Samples of string `k` on days `from` to `to` (inclusive), every `every` steps. */
-function samplesOf(
+export function samplesOf(
   run: OutputRun,
   reports: Reports,
   k: number,
