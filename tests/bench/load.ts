@@ -3,6 +3,7 @@ import { usedBy } from './fleet/process';
 import { loadOn, lookerAt, printer, say, stageFleet, type Looker, type Staged } from './fleet/stage';
 import { serve } from './ingest/server';
 import { paths } from '../../src/schemas/paths';
+import { closePools } from '../../src/server/db/pools';
 import type { LoadRun } from '../../simulator/load/run';
 
 /**
@@ -176,5 +177,6 @@ try {
   figure('seed_s', staged.seconds, 's');
   await run(db, staged);
 } finally {
+  await closePools();
   await db.end();
 }

@@ -175,7 +175,6 @@ async function measure(db: pg.Client, size: number): Promise<Cost> {
       throw new Error(`Frames are read from end to end (plans in ${PLANS}): ${whole.join(', ')}`);
     return { readingUs, pages };
   } finally {
-    await closePools();
     await server.stop();
   }
 }
@@ -194,5 +193,6 @@ try {
   }
   say(`plans are in ${PLANS}`);
 } finally {
+  await closePools();
   await db.end();
 }

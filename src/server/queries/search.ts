@@ -15,9 +15,14 @@ export interface SearchRow {
 /** A prefix for `like`, with what `like` would read as a pattern made plain. */
 export const likePrefix = (text: string): string => `${text.replace(/[\\%_]/g, '\\$&')}%`;
 
+/** Sorts after whatever a serial may go on with. */
+const LAST_CHARACTER = '\u{10ffff}';
+
 /**
  * Sites by the beginning of any word of their name or place, strings by the beginning of theirs ("B3", or
- * "Kestrel B3" within a site), units by the beginning of their serial. Serials and string names go by index.
+ * "Kestrel B3" within a site), units by the beginning of their serial. Serials go by index in their order, each looked up
+ * until there are enough: written as bounds, since behind row-level security `like` may not choose rows (it is not
+ * leakproof), and a short beginning would match every unit there is.
  */
 export async function search(tx: Tx, text: string, limit: number): Promise<SearchRow[]> {
   const words = text.split(/\s+/).filter(Boolean);
@@ -38,20 +43,23 @@ export async function search(tx: Tx, text: string, limit: number): Promise<Searc
         and (:withSite = '' or lower(site.name) like lower(:site) or lower(site.name) like '% ' || lower(:site))
       order by length(s.name), s.name, site.name limit :limit)
      union all
-     (select 'unit', site.ref, site.name, site.place, s.ref, s.name, u.serial, slot.position
-      from unit u
-      join placement p on p.unit_id = u.id and p.placed_to is null
-      join slot on slot.id = p.slot_id
-      join string s on s.id = slot.string_id
-      join site on site.id = s.site_id
-      where u.organisation_id = (select actor_organisation()) and u.serial like :serial and ${SITE_VISIBLE}
-      order by u.serial limit :limit)`,
+     (select 'unit', x.ref, x.site, x.place, x."stringRef", x.string, u.serial, x.position
+      from (select id, serial from unit
+            where organisation_id = (select actor_organisation()) and serial ~>=~ :serial and serial ~<~ :serialEnd
+            order by serial using ~<~ offset 0) u
+      cross join lateral (
+        select site.ref, site.name as site, site.place, s.ref as "stringRef", s.name as string, slot.position
+        from placement p join slot on slot.id = p.slot_id join string s on s.id = slot.string_id
+          join site on site.id = s.site_id
+        where p.unit_id = u.id and p.placed_to is null and ${SITE_VISIBLE} limit 1) x
+      order by u.serial using ~<~ limit :limit)`,
     {
       whole: likePrefix(words.join(' ')),
       last: likePrefix(last),
       withSite,
       site: likePrefix(withSite),
-      serial: likePrefix(text.toUpperCase()),
+      serial: text.toUpperCase(),
+      serialEnd: `${text.toUpperCase()}${LAST_CHARACTER}`,
       limit,
     },
   );

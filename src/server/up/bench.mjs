@@ -1,6 +1,7 @@
 import fs from 'node:fs';
 import path from 'node:path';
 import process from 'node:process';
+import { setTimeout as sleep } from 'node:timers/promises';
 import { buildIfStale } from './build.mjs';
 import { withClient } from './database.mjs';
 import { root } from './place.mjs';
@@ -52,6 +53,18 @@ export async function bench([name, ...rest]) {
     });
     return result.code ?? 1;
   } finally {
-    await withClient(stage.url, (db) => db.query(`drop database if exists "${database}" with (force)`));
+    await dropDatabase(stage.url, database);
   }
+}
+
+/** Autovacuum may be at work in a large one: that leaves by itself, and the database's owner can't end it. */
+async function dropDatabase(url, database) {
+  for (let tries = 0; ; tries++)
+    try {
+      await withClient(url, (db) => db.query(`drop database if exists "${database}" with (force)`));
+      return;
+    } catch (error) {
+      if (error.code !== '42501' || tries >= 150) throw error;
+      await sleep(200);
+    }
 }

@@ -5,7 +5,6 @@ import { seedFleet, shapeOf } from '../../../seeds/fleet/seed-fleet';
 import { startLoad, type LoadRun } from '../../../simulator/load/run';
 import type { LoadInput } from '../../../simulator/load/options';
 import { openSession } from '../../../src/server/auth/sessions';
-import { closePools } from '../../../src/server/db/pools';
 
 export const SECRET = 'loggers of a bench';
 export const say = (text: string): void => void process.stderr.write(`${text}\n`);
@@ -66,7 +65,6 @@ export async function lookerAt(db: pg.Client, port: number): Promise<Looker> {
   const person = rows[0];
   if (!person) throw new Error('The fleet has nobody in it.');
   const cookie = (await openSession(person.id, false)).split(';')[0] ?? '';
-  await closePools();
   return {
     organisationId: person.organisation,
     personId: person.id,
