@@ -26,7 +26,10 @@ import {
 } from '../queries/rollup';
 
 const DAY_MS = 86_400_000;
-const LATE_A_TIME = 1000;
+/** Many at once: a packed string is unpacked and packed once for all of its late frames among them. */
+const LATE_A_TIME = 10_000;
+/** Packed strings that are in memory at a time, with their whole day. */
+const STRINGS_A_TIME = 20;
 
 const dayOf = (at: Date): string => at.toISOString().slice(0, 10);
 
@@ -48,7 +51,7 @@ export async function mergeLateFrames(now: Date): Promise<number> {
       const byDay = new Map<string, LateFrame[]>();
       for (const l of late) byDay.set(dayOf(l.at), [...(byDay.get(dayOf(l.at)) ?? []), l]);
       for (const [day, frames] of byDay)
-        if (packed.has(day)) await mergeIntoPacked(client, day, frames);
+        if (packed.has(day)) for (const part of byStrings(frames)) await mergeIntoPacked(client, day, part);
         else await mergeIntoSingle(client, new Date(day), frames, now);
       merged += late.length;
     }
@@ -71,6 +74,15 @@ const itemOf = (late: LateFrame): Item => ({
   written: () => undefined,
   refused: () => undefined,
 });
+
+/** The frames of some strings after the other, each string's in the order that they came in. */
+function* byStrings(late: readonly LateFrame[]): Generator<LateFrame[]> {
+  const strings = [...new Set(late.map((l) => rowOf(l).stringId))];
+  for (let i = 0; i < strings.length; i += STRINGS_A_TIME) {
+    const some = new Set(strings.slice(i, i + STRINGS_A_TIME));
+    yield late.filter((l) => some.has(rowOf(l).stringId));
+  }
+}
 
 async function mergeIntoSingle(
   client: pg.ClientBase,
