@@ -65,7 +65,7 @@ export const processSheets = {
   markWordsAtMarks: (markWords: string, marks: number) => `; ${markWords} at ${counted(marks, 'time')}`,
   markWordsAtMarks2: (markWords: string, marks: number) => `${markWords} at ${counted(marks, 'time')}`,
   processOn: (process: string, host: string, roles: string) => `Process ${process} on ${host}: ${roles}`,
-  numberRunsSince: (pid: number) => `number ${pid}, runs since `,
+  numberRunsSince: (pid: number) => `number ${pid}, started `,
   inTheLast: (running: number, hours: number) =>
     `${counted(running, 'process', 'processes')} in the last ${counted(hours, 'hour')}`,
   howFarBack: 'How far back',

@@ -23,8 +23,8 @@ function One({ picture, history, from, to, timeZone }: Shown & { picture: Pictur
   const said = figures.map((f) => (f.name ? `${f.name} ${f.words}` : f.words)).join(', ');
   return (
     <figure className="min-w-0">
-      <figcaption className="mb-1 flex flex-wrap items-baseline justify-between gap-x-3">
-        <span className="text-sm text-ink-2">{picture.title}</span>
+      <figcaption className="mb-1">
+        <span className="block text-sm text-ink-2">{picture.title}</span>
         <span className="text-sm">
           {figures.map(({ name, words }, i) => (
             <span key={name ?? i} className="ml-2 whitespace-nowrap first:ml-0">
