@@ -4,7 +4,7 @@ import type { CommandNow } from '../../schemas/api/now';
 import type { ShutdownNow } from '../../schemas/api/shutdown';
 import { SHUTDOWN_COLUMNS } from './columns';
 import { shutdownFinding } from './finding';
-import { heldSites, shutdownGroups, shutdownRows } from './groups';
+import { CAUSES_AT_ONCE, heldSites, shownOf, shutdownGroups, shutdownRows } from './groups';
 import { changedShutdown } from './query';
 
 const command = (inForce: CommandNow['inForce'], since: string, where = 'Gym'): CommandNow => ({
@@ -56,6 +56,16 @@ describe('the groups of the Shutdown page', () => {
     expect(names('aab35')).toEqual(['Old Tannery Market Hall 1']);
     expect(names('d2')).toEqual(['Quayside Cold Store 1']);
     expect(names('nothing like it')).toEqual([]);
+  });
+
+  it('begin with their first causes where there are many; of hazards none is left out', () => {
+    const many = (verdict: 'silent' | 'not_shutting_down') => ({
+      verdict,
+      causes: Array.from({ length: 30 }, (_, i) => cause(verdict, `Roof ${i}`, [unitOf('A1', 1)])),
+    });
+    expect(shownOf(many('silent'), new Set())).toHaveLength(CAUSES_AT_ONCE);
+    expect(shownOf(many('silent'), new Set(['silent']))).toHaveLength(30);
+    expect(shownOf(many('not_shutting_down'), new Set())).toHaveLength(30);
   });
 
   it('become one row a unit in the download', () => {
