@@ -66,5 +66,5 @@ export interface CaseFigures {
   strings: FiguresString[];
 }
 
-/** The most strings whose units are kept one by one: more make a case's figures unreadable. */
-export const STRINGS_WITH_UNITS = 12;
+/** The most strings whose units are kept one by one, as many as the evidence draws. */
+export const STRINGS_WITH_UNITS = 16;

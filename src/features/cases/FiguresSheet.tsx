@@ -7,8 +7,9 @@ import { Staircase } from '../../drawings/Staircase';
 import { fullTime } from '../../drawings/times';
 import type { CasePage } from '../../schemas/api/cases';
 import { OUTCOME_TONE } from './words';
+import { figuresSheet } from '../../words/cases';
 
-/** So many staircases are drawn; the table names every string. */
+/** So many staircases are drawn; the table names more, the evidence all. */
 const DRAWN = 3;
 
 /** The figures of the minute in which the case was opened, and those that were found again after closing. */
@@ -20,22 +21,22 @@ export function FiguresSheet({ page }: { page: CasePage }) {
   return (
     <Sheet
       id="figures"
-      title={after ? 'Before and after' : 'Figures when it was opened'}
+      title={after ? figuresSheet.beforeAndAfter : figuresSheet.figuresWhenItWas}
       aside={
         after ? (
           <Tag tone={OUTCOME_TONE[after.outcome]}>{CHECK_OUTCOME_WORDS[after.outcome]}</Tag>
         ) : closedAt ? (
-          'Wakeline looks again over the following daylight'
+          figuresSheet.wakelineLooksAgainOver
         ) : undefined
       }
     >
       <div className="overflow-x-auto">
         <table className="w-full border-collapse text-left">
-          <caption className="sr-only">Figures before and after</caption>
+          <caption className="sr-only">{figuresSheet.figuresBeforeAndAfter}</caption>
           <thead>
             <tr className="border-b border-rule text-sm text-ink-2">
               <th scope="col" className="py-2 pr-4 font-medium">
-                Figure
+                {figuresSheet.figure}
               </th>
               <th scope="col" className="py-2 pr-4 font-medium">
                 {fullTime(before.at, timeZone)}
@@ -66,7 +67,7 @@ export function FiguresSheet({ page }: { page: CasePage }) {
         return (
           <figure key={then.id} className="mt-5">
             <figcaption className="mb-1 text-sm text-ink-2">
-              String {then.name}: volts along its positions{now ? ', before and after' : ''}
+              {figuresSheet.stringVoltsAlongIts(then.name, now ? figuresSheet.beforeAndAfter2 : '')}
             </figcaption>
             <div className={now ? 'grid gap-4 xl:grid-cols-2' : ''}>
               <Drawn id={`before-${then.id}`} string={then} half={now !== undefined} />

@@ -1,5 +1,6 @@
 import sharp from 'sharp';
 import type { Actor } from '../../domain/access/permissions';
+import { STRINGS_WITH_UNITS } from '../../domain/cases/figures';
 import { localDay } from '../../drawings/times';
 import type { HistoryQuantity, StringHistory } from '../../schemas/api/string';
 import type { Tx } from '../db/transaction';
@@ -19,8 +20,6 @@ import { packData } from '../reports/handover/data';
 import { casePage } from './cases';
 import { readHistory } from './string-history';
 
-/** So many strings are shown one by one: more would make a book that nobody reads. */
-const STRINGS_SHOWN = 8;
 const PHOTOS_SHOWN = 60;
 const DAY_MS = 86_400_000;
 const EVENT_DAYS = { before: 14, after: 14 };
@@ -40,18 +39,18 @@ async function gather(tx: Tx, actor: Actor, ref: string, at: Date): Promise<Gath
   const site = found(await visibleSite(tx, c.siteId), 'site');
   const built = packData.parse(await handoverRows(tx, site.id));
   const on = localDay(c.openedAt, c.timeZone);
-  const shown = c.strings.slice(0, STRINGS_SHOWN);
   const strings: EvidenceString[] = [];
-  for (const string of shown) {
-    const of = built.strings.find((s) => s.id === string.id);
+  for (const { id, name } of c.strings) {
+    const of = built.strings.find((s) => s.id === id);
     if (!of) continue;
-    strings.push({
-      id: string.id,
-      name: string.name,
-      built: of,
-      day: await readHistory(tx, string.id, { range: 'day', quantity: 'voltage', on }, at),
-      week: await readHistory(tx, string.id, { range: 'week', quantity: 'power', on }, at),
-    });
+    const drawn =
+      strings.length < STRINGS_WITH_UNITS // the rows name all of them
+        ? {
+            day: await readHistory(tx, id, { range: 'day', quantity: 'voltage', on }, at),
+            week: await readHistory(tx, id, { range: 'week', quantity: 'power', on }, at),
+          }
+        : null;
+    strings.push({ id, name, built: of, drawn });
   }
   const names = new Set(c.strings.map((s) => s.name));
   const opened = Date.parse(c.openedAt);
@@ -64,7 +63,6 @@ async function gather(tx: Tx, actor: Actor, ref: string, at: Date): Promise<Gath
     place: built.site.place,
     ruleSet: built.site.ruleSet,
     strings,
-    more: c.strings.slice(STRINGS_SHOWN).map((s) => s.name),
     meterReadings: built.readings.filter((r) => names.size === 0 || names.has(r.string)),
     events: await eventsOfCase(tx, {
       ref,
@@ -85,7 +83,8 @@ async function gather(tx: Tx, actor: Actor, ref: string, at: Date): Promise<Gath
 }
 
 async function drawingsOf(data: Evidence) {
-  const shown = new Set(data.strings.map((s) => s.id));
+  const shown = data.strings.flatMap(({ id, name, drawn }) => (drawn ? [{ id, name, ...drawn }] : []));
+  const ids = new Set(shown.map((s) => s.id));
   const draw = async <T extends { id: string }>(
     list: readonly T[],
     one: (item: T) => Promise<PaperDrawing>,
@@ -95,12 +94,12 @@ async function drawingsOf(data: Evidence) {
     return drawn;
   };
   const figures = (of: Evidence['case']['before']) =>
-    (of?.strings ?? []).filter((s) => shown.has(s.id) && s.slots.length > 0 && s.at !== null);
+    (of?.strings ?? []).filter((s) => ids.has(s.id) && s.slots.length > 0 && s.at !== null);
   return {
     before: await draw(figures(data.case.before), staircaseDrawing),
     after: await draw(figures(data.case.after), staircaseDrawing),
-    day: await draw(data.strings, (s) => historyDrawing(s.day, `Volts of ${s.name}`)),
-    week: await draw(data.strings, (s) => historyDrawing(s.week, `Watts of ${s.name}`)),
+    day: await draw(shown, (s) => historyDrawing(s.day, `Volts of ${s.name}`)),
+    week: await draw(shown, (s) => historyDrawing(s.week, `Watts of ${s.name}`)),
   };
 }
 

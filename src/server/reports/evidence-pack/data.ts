@@ -8,10 +8,13 @@ export interface EvidenceString {
   id: string;
   name: string;
   built: PackData['strings'][number];
-  /** Volts through the day on which the case was opened. */
-  day: StringHistory;
-  /** Watts of the seven days up to it. */
-  week: StringHistory;
+  /** null: beyond the strings that are drawn. */
+  drawn: {
+    /** Volts through the day on which the case was opened. */
+    day: StringHistory;
+    /** Watts of the seven days up to it. */
+    week: StringHistory;
+  } | null;
 }
 
 export interface Evidence {
@@ -22,9 +25,8 @@ export interface Evidence {
   organisation: { name: string; phone: string | null };
   place: string;
   ruleSet: string;
+  /** All of the case; those up to a bound are drawn one by one. */
   strings: EvidenceString[];
-  /** Names of strings that the case is about too, beyond those shown one by one. */
-  more: string[];
   meterReadings: PackData['readings'];
   events: EventItem[];
 }

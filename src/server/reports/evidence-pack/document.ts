@@ -10,6 +10,8 @@ import { kindWords, RULE_SETS } from '../handover/sections';
 import { Paper } from '../pdf/paper';
 import type { Evidence, EvidenceAbout, EvidenceString } from './data';
 import type { PaperDrawing } from './drawings';
+import { stringRows } from './string-rows';
+import { papersEvidenceDocument } from '../../../words/papers-evidence';
 
 /** What is drawn, by the string's public identifier. */
 export interface EvidenceDrawings {
@@ -20,8 +22,8 @@ export interface EvidenceDrawings {
 }
 
 const CAUTION = [
-  'Strings stay dangerous in light.',
-  'Shutdown is not isolation: each module and its leads to its unit stay at module voltage. Never open a connector under load. Isolate, lock out, prove dead with a rated meter; licensed or qualified people, local code first. These papers say what was reported and recorded, not what stands on the conductors now.',
+  papersEvidenceDocument.stringsStayDangerousIn,
+  papersEvidenceDocument.shutdownIsNotIsolation,
 ] as const;
 
 /**
@@ -37,14 +39,19 @@ export async function evidencePdf(
   const c = data.case;
   const date = longDate(about.at, c.timeZone);
   const paper = new Paper(
-    { title: `Case ${c.number}: ${c.title}`, author: data.organisation.name, at: about.at },
     {
-      head: `${c.siteName} · evidence of case ${c.number} · ${date}`,
-      foot: `Fingerprint of the data (SHA-256) ${about.fingerprint}`,
+      title: papersEvidenceDocument.caseNTitle(c.number, c.title),
+      author: data.organisation.name,
+      at: about.at,
+    },
+    {
+      head: papersEvidenceDocument.evidenceOfCase(c.siteName, c.number, date),
+      foot: papersEvidenceDocument.fingerprintOfTheData(about.fingerprint),
     },
   );
   cover(paper, data, about);
   figures(paper, data, drawings);
+  allStrings(paper, data);
   for (const string of data.strings) stringSheet(paper, string, c.timeZone, drawings);
   meterReadings(paper, data);
   events(paper, data);
@@ -56,37 +63,50 @@ export async function evidencePdf(
 
 function cover(paper: Paper, data: Evidence, about: EvidenceAbout): void {
   const c = data.case;
-  paper.text(`Evidence of case ${c.number}`, { size: 13, colour: PAPER.ink2 });
+  paper.text(papersEvidenceDocument.evidenceOfCase2(c.number), { size: 13, colour: PAPER.ink2 });
   paper.text(c.title, { size: 24, weight: 600, leading: 1.15 });
   paper.space(8);
   paper.caution(...CAUTION);
   paper.space(6);
   paper.facts([
-    ['Site', [c.siteName, data.place].filter(Boolean).join(', ')],
-    ['At the site', [data.contact.name, data.contact.phone].filter(Boolean).join(', ')],
-    ['Looked after by', [data.organisation.name, data.organisation.phone].filter(Boolean).join(', ')],
+    [papersEvidenceDocument.site, [c.siteName, data.place].filter(Boolean).join(', ')],
+    [papersEvidenceDocument.atTheSite, [data.contact.name, data.contact.phone].filter(Boolean).join(', ')],
     [
-      'What it is about',
+      papersEvidenceDocument.lookedAfterBy,
+      [data.organisation.name, data.organisation.phone].filter(Boolean).join(', '),
+    ],
+    [
+      papersEvidenceDocument.whatItIsAbout,
       partsInWords(
         c.parts,
         c.strings.map((s) => s.name),
-      ) || 'the site as a whole',
+      ) || papersEvidenceDocument.theSiteAsA,
     ],
-    ['Kind', CASE_KIND_WORDS[c.kind]],
-    ...(c.cause ? ([['Cause', `${c.cause.headline}${c.cause.open ? '' : ' (over by now)'}`]] as const) : []),
+    [papersEvidenceDocument.kind, CASE_KIND_WORDS[c.kind]],
+    ...(c.cause
+      ? ([
+          [
+            papersEvidenceDocument.cause,
+            `${c.cause.headline}${c.cause.open ? '' : papersEvidenceDocument.overByNow}`,
+          ],
+        ] as const)
+      : []),
     [
-      'State',
-      `${CASE_STATE_WORDS[c.state]}${c.outcome ? `; looked at again: ${CHECK_OUTCOME_WORDS[c.outcome]}` : ''}`,
+      papersEvidenceDocument.state,
+      `${CASE_STATE_WORDS[c.state]}${c.outcome ? papersEvidenceDocument.lookedAtAgain(CHECK_OUTCOME_WORDS[c.outcome]) : ''}`,
     ],
-    ['Opened', `${fullTime(c.openedAt, c.timeZone)}, ${c.openedBy || 'Wakeline'}`],
-    ['Assigned to', c.assignee?.name ?? 'nobody yet'],
-    ['Due', c.dueOn ? longDate(`${c.dueOn}T12:00:00Z`, 'UTC') : 'no day'],
-    ['Shutdown rule set', RULE_SETS[data.ruleSet] ?? data.ruleSet],
-    ['Times in these papers', c.timeZone],
-    ['Put together', `${fullTime(about.at, c.timeZone)}, ${about.madeBy}`],
+    [papersEvidenceDocument.opened, `${fullTime(c.openedAt, c.timeZone)}, ${c.openedBy || 'Wakeline'}`],
+    [papersEvidenceDocument.assignedTo, c.assignee?.name ?? papersEvidenceDocument.nobodyYet],
+    [
+      papersEvidenceDocument.due,
+      c.dueOn ? longDate(`${c.dueOn}T12:00:00Z`, 'UTC') : papersEvidenceDocument.noDay,
+    ],
+    [papersEvidenceDocument.shutdownRuleSet, RULE_SETS[data.ruleSet] ?? data.ruleSet],
+    [papersEvidenceDocument.timesInThesePapers, c.timeZone],
+    [papersEvidenceDocument.putTogether, `${fullTime(about.at, c.timeZone)}, ${about.madeBy}`],
   ]);
-  paper.heading('What is wrong', 2);
-  paper.text(c.what || 'Nothing is written down.');
+  paper.heading(papersEvidenceDocument.whatIsWrong, 2);
+  paper.text(c.what || papersEvidenceDocument.nothingIsWrittenDown);
 }
 
 function drawing(paper: Paper, picture: PaperDrawing | undefined, words: string): void {
@@ -100,13 +120,13 @@ function drawing(paper: Paper, picture: PaperDrawing | undefined, words: string)
 function figures(paper: Paper, data: Evidence, drawings: EvidenceDrawings): void {
   const { before, after, timeZone } = data.case;
   if (!before) return;
-  paper.heading('Figures', 1);
+  paper.heading(papersEvidenceDocument.figures, 1);
   paper.table(
     [
       { header: '', share: 1 },
-      { header: 'Figure', share: 2 },
-      { header: `When opened, ${fullTime(before.at, timeZone)}`, share: 3 },
-      ...(after ? [{ header: `Looked at again, ${fullTime(after.at, timeZone)}`, share: 3 }] : []),
+      { header: papersEvidenceDocument.figure, share: 2 },
+      { header: papersEvidenceDocument.whenOpened(before.at, timeZone), share: 3 },
+      ...(after ? [{ header: papersEvidenceDocument.lookedAtAgain2(after.at, timeZone), share: 3 }] : []),
     ],
     comparedFigures(before, after).map((l) => [
       l.subject,
@@ -116,65 +136,85 @@ function figures(paper: Paper, data: Evidence, drawings: EvidenceDrawings): void
     ]),
   );
   for (const s of before.strings) {
-    drawing(
-      paper,
-      drawings.before.get(s.id),
-      `String ${s.name} when the case was opened: volts along its positions, the expected staircase dotted, what is assumed from a claim dashed.`,
-    );
-    drawing(paper, drawings.after.get(s.id), `String ${s.name} when it was looked at again.`);
+    drawing(paper, drawings.before.get(s.id), papersEvidenceDocument.stringWhenTheCase(s.name));
+    drawing(paper, drawings.after.get(s.id), papersEvidenceDocument.stringWhenItWas(s.name));
   }
+}
+
+function allStrings(paper: Paper, data: Evidence): void {
+  if (data.strings.length < 2) return;
+  const { words, columns, rows } = stringRows(data);
+  paper.heading(papersEvidenceDocument.theStringsOfThis(data.strings.length), 1);
+  if (words) paper.text(words);
+  paper.table(columns, rows);
 }
 
 function stringSheet(
   paper: Paper,
-  { id, name, built, day, week }: EvidenceString,
+  { id, name, built, drawn }: EvidenceString,
   timeZone: string,
   drawings: EvidenceDrawings,
 ): void {
-  paper.heading(`String ${name}`, 1);
+  if (!drawn) return;
+  const { day, week } = drawn;
+  paper.heading(papersEvidenceDocument.stringName(name), 1);
   paper.facts([
-    ['Units', `${built.slots.length} × ${built.unitType} (${kindWords(built.kind)})`],
-    ['Modules', [...new Set(built.slots.map((s) => s.moduleType))].join(', ')],
-    ['Plane', built.plane],
-    ['Home run ends at', `${built.inverter}, input ${built.input}`],
-    ['Zone', built.zone],
-    ['Transmitters heard', built.transmitters.join(', ') || 'none entered'],
-    ['Logger', built.logger ?? 'none'],
-    ['Home run leaves the array', built.leavesArray ? 'yes' : 'no'],
+    [papersEvidenceDocument.units, `${built.slots.length} × ${built.unitType} (${kindWords(built.kind)})`],
+    [papersEvidenceDocument.modules, [...new Set(built.slots.map((s) => s.moduleType))].join(', ')],
+    [papersEvidenceDocument.plane, built.plane],
+    [
+      papersEvidenceDocument.homeRunEndsAt,
+      papersEvidenceDocument.inverterInputInput(built.inverter, built.input),
+    ],
+    [papersEvidenceDocument.zone, built.zone],
+    [
+      papersEvidenceDocument.transmittersHeard,
+      built.transmitters.join(', ') || papersEvidenceDocument.noneEntered,
+    ],
+    [papersEvidenceDocument.logger, built.logger ?? 'none'],
+    [papersEvidenceDocument.homeRunLeavesThe, built.leavesArray ? 'yes' : 'no'],
   ]);
-  paper.heading('As built', 2);
+  paper.heading(papersEvidenceDocument.asBuilt, 2);
   paper.table(
     [
-      { header: 'Position', share: 1, align: 'right' },
-      { header: 'Serial', share: 3 },
-      { header: 'Module', share: 3 },
-      { header: 'Place', share: 3 },
+      { header: papersEvidenceDocument.position, share: 1, align: 'right' },
+      { header: papersEvidenceDocument.serial, share: 3 },
+      { header: papersEvidenceDocument.module, share: 3 },
+      { header: papersEvidenceDocument.place, share: 3 },
     ],
-    built.slots.map((s) => [String(s.position), s.serial ?? 'no unit', s.moduleType, s.place]),
-    'no positions entered',
+    built.slots.map((s) => [
+      String(s.position),
+      s.serial ?? papersEvidenceDocument.noUnit,
+      s.moduleType,
+      s.place,
+    ]),
+    papersEvidenceDocument.noPositionsEntered,
   );
-  const key =
-    'Measured in colour, the expected band behind, other strings of the plane dashed, events dotted.';
-  drawing(paper, drawings.day.get(id), `Volts on ${longDate(new Date(day.from * 1000), timeZone)}. ${key}`);
+  const key = papersEvidenceDocument.measuredInColourThe;
+  drawing(
+    paper,
+    drawings.day.get(id),
+    papersEvidenceDocument.voltsOn(longDate(new Date(day.from * 1000), timeZone), key),
+  );
   drawing(
     paper,
     drawings.week.get(id),
-    `Watts over the seven days up to ${longDate(new Date((week.to - 1) * 1000), timeZone)}. ${key}`,
+    papersEvidenceDocument.wattsOverTheSeven(longDate(new Date((week.to - 1) * 1000), timeZone), key),
   );
   for (const note of new Set([...day.notes, ...week.notes]))
     paper.text(note, { size: 9, colour: PAPER.ink2 });
 }
 
 function meterReadings(paper: Paper, data: Evidence): void {
-  paper.heading('Meter readings on record', 1);
+  paper.heading(papersEvidenceDocument.meterReadingsOnRecord, 1);
   const { timeZone } = data.case;
   paper.table(
     [
-      { header: 'String', share: 1 },
-      { header: 'When', share: 2 },
-      { header: 'Between', share: 2 },
-      { header: 'Reading', share: 1, align: 'right' },
-      { header: 'What it means', share: 4 },
+      { header: papersEvidenceDocument.string, share: 1 },
+      { header: papersEvidenceDocument.when, share: 2 },
+      { header: papersEvidenceDocument.between, share: 2 },
+      { header: papersEvidenceDocument.reading, share: 1, align: 'right' },
+      { header: papersEvidenceDocument.whatItMeans, share: 4 },
       { header: 'By', share: 2 },
     ],
     data.meterReadings.map((r) => [
@@ -185,30 +225,30 @@ function meterReadings(paper: Paper, data: Evidence): void {
       r.finding?.headline ?? '',
       r.person,
     ]),
-    'No meter reading of these strings was recorded.',
+    papersEvidenceDocument.noMeterReadingOf,
   );
 }
 
 function events(paper: Paper, data: Evidence): void {
-  paper.heading('Events', 1);
+  paper.heading(papersEvidenceDocument.events, 1);
   const { timeZone } = data.case;
   paper.table(
     [
-      { header: 'When', share: 2 },
-      { header: 'String', share: 1 },
-      { header: 'What', share: 6 },
+      { header: papersEvidenceDocument.when, share: 2 },
+      { header: papersEvidenceDocument.string, share: 1 },
+      { header: papersEvidenceDocument.what, share: 6 },
     ],
     data.events.map((e) => [
       fullTime(e.at, timeZone),
       e.stringName ?? '',
       eventWords(e.kind, e.detail).words,
     ]),
-    'No event in the two weeks around the opening.',
+    papersEvidenceDocument.noEventInThe,
   );
 }
 
 function checklist(paper: Paper, data: Evidence): void {
-  paper.heading('Checklist as done', 1);
+  paper.heading(papersEvidenceDocument.checklistAsDone, 1);
   const { kind, checklist: marks, timeZone } = data.case;
   const own = checklistOf(kind);
   const others = marks.flatMap((m) =>
@@ -216,15 +256,15 @@ function checklist(paper: Paper, data: Evidence): void {
   );
   paper.table(
     [
-      { header: 'Looked at', share: 1 },
-      { header: 'What', share: 5 },
-      { header: 'Who and when', share: 3 },
-      { header: 'What was seen', share: 4 },
+      { header: papersEvidenceDocument.lookedAt, share: 1 },
+      { header: papersEvidenceDocument.what, share: 5 },
+      { header: papersEvidenceDocument.whoAndWhen, share: 3 },
+      { header: papersEvidenceDocument.whatWasSeen, share: 4 },
     ],
     [...own, ...others].map((item) => {
       const mark = marks.find((m) => m.key === item.key);
       return [
-        mark?.done ? 'yes' : 'not yet',
+        mark?.done ? 'yes' : papersEvidenceDocument.notYet,
         item.check,
         mark?.done ? `${mark.by}, ${fullTime(mark.at, timeZone)}` : '',
         mark?.note ?? '',
@@ -235,10 +275,10 @@ function checklist(paper: Paper, data: Evidence): void {
 }
 
 function history(paper: Paper, data: Evidence): void {
-  paper.heading('What was written and found', 1);
+  paper.heading(papersEvidenceDocument.whatWasWrittenAnd, 1);
   const { timeZone } = data.case;
   const told = data.entries.filter((e) => e.body !== '' && e.kind !== 'checklist');
-  if (told.length === 0) paper.text('Nothing was written yet.', { colour: PAPER.ink2 });
+  if (told.length === 0) paper.text(papersEvidenceDocument.nothingWasWrittenYet, { colour: PAPER.ink2 });
   for (const entry of told) {
     paper.need(40);
     paper.text(`${entry.person ?? 'Wakeline'}, ${fullTime(entry.at, timeZone)}`, {
@@ -254,7 +294,7 @@ function history(paper: Paper, data: Evidence): void {
 /** Two photos a row, each with its words. */
 function photoPages(paper: Paper, data: Evidence, photos: ReadonlyMap<string, Buffer>): void {
   if (data.photos.length === 0) return;
-  paper.heading('Photos', 1, 260);
+  paper.heading(papersEvidenceDocument.photos, 1, 260);
   const gap = 14;
   const width = (paper.width - gap) / 2;
   const height = width * 0.75;
