@@ -1,4 +1,5 @@
-import type { ChartLine } from './model';
+import { strokeOf, type ChartLine } from './model';
+import { chartLegend } from '../../words/charts';
 
 /** Which line is which, where there is more than one; more than these are told by the crosshair. */
 const MOST = 14;
@@ -6,15 +7,15 @@ const MOST = 14;
 export function ChartLegend({ lines }: { lines: readonly ChartLine[] }) {
   if (lines.length < 2 || lines.length > MOST) return null;
   return (
-    <ul className="mt-1 flex flex-wrap gap-x-4 gap-y-0.5 text-sm text-ink-2" aria-label="Lines">
+    <ul className="mt-1 flex flex-wrap gap-x-4 gap-y-0.5 text-sm text-ink-2" aria-label={chartLegend.lines}>
       {lines.map((line) => (
         <li key={line.name} className="inline-flex items-center gap-1.5">
-          <svg width="22" height="8" aria-hidden="true">
+          <svg width="34" height="8" aria-hidden="true">
             <path
-              d="M0 4H22"
+              d="M0 4H34"
               stroke={`var(--${line.tone})`}
-              strokeWidth={line.quiet ? 1.2 : 2.2}
-              strokeDasharray={line.dashed ? '5 4' : undefined}
+              strokeWidth={strokeOf(line).width + 0.2}
+              strokeDasharray={strokeOf(line).dash?.join(' ')}
               opacity={line.quiet ? 0.7 : 1}
             />
           </svg>

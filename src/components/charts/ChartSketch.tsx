@@ -1,5 +1,5 @@
 import { gappedLine } from '../../drawings/gapped-line';
-import type { ChartModel } from './model';
+import { strokeOf, type ChartModel } from './model';
 
 /** The curve before the chart library is there: the same data, drawn on the server, without axes. */
 export function ChartSketch({ model, height }: { model: ChartModel; height: number }) {
@@ -52,7 +52,8 @@ export function ChartSketch({ model, height }: { model: ChartModel; height: numb
           d={path(line.at, line.values)}
           fill="none"
           stroke={`var(--${line.tone})`}
-          strokeWidth={line.quiet ? 1 : 2}
+          strokeWidth={strokeOf(line).width}
+          strokeDasharray={strokeOf(line).dash?.join(' ')}
           opacity={line.quiet ? 0.45 : 1}
           vectorEffect="non-scaling-stroke"
         />

@@ -11,6 +11,24 @@ export interface ChartLine {
   quiet?: boolean;
   /** Not measured here, or laid over from elsewhere. */
   dashed?: boolean;
+  /** Tells lines of one colour apart: the first is drawn through, each further one in another stroke (`strokeOf`). */
+  turn?: number;
+}
+
+const STROKES: readonly (readonly number[] | null)[] = [null, [9, 4], [2, 3], [12, 4, 2, 4]];
+
+/** How a line is drawn: four strokes, then the same ones thinner, so that eight of one colour are told apart. */
+export function strokeOf(line: Pick<ChartLine, 'dashed' | 'quiet' | 'turn'>): {
+  width: number;
+  /** px drawn, px left out; null: drawn through */
+  dash: readonly number[] | null;
+} {
+  const turn = line.turn ?? 0;
+  const dash = STROKES[turn % STROKES.length] ?? null;
+  return {
+    width: line.quiet ? 1 : turn >= STROKES.length ? 1.2 : 2,
+    dash: dash ?? (line.dashed ? [5, 4] : null),
+  };
 }
 export interface ChartBand {
   name: string;

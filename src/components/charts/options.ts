@@ -3,7 +3,9 @@ import { number, quantity } from '../../drawings/numbers';
 import { clock, clockSeconds, longDate, shortDate } from '../../drawings/times';
 import type { Colours } from './colours';
 import { fromWall, toWall } from './local-time';
-import { valueAt, type ChartBand, type ChartLine, type ChartModel } from './model';
+import { strokeOf, valueAt, type ChartBand, type ChartLine, type ChartModel } from './model';
+import { chartsOptions } from '../../words/charts';
+import { LOCALE } from '../../words/language';
 
 /** A span so short that its ticks lie seconds apart. */
 const MINUTES_S = 600;
@@ -34,16 +36,16 @@ export function readout(
   const near = Math.max(120, (model.to - model.from) / 60);
   const rows: [string, string][] = model.lines.map((line) => {
     const value = valueAt(line, atS, near);
-    return [line.name, value === null ? 'nothing reported' : quantity(value, model.unit, model.digits)];
+    return [
+      line.name,
+      value === null ? chartsOptions.nothingReported : quantity(value, model.unit, model.digits),
+    ];
   });
   if (model.band) {
     const low = valueAt({ at: model.band.at, values: model.band.low }, atS, near * 2);
     const high = valueAt({ at: model.band.at, values: model.band.high }, atS, near * 2);
     if (low !== null && high !== null)
-      rows.push([
-        model.band.name,
-        `${quantity(low, '', model.digits).trim()} to ${quantity(high, model.unit, model.digits)}`,
-      ]);
+      rows.push([model.band.name, chartsOptions.lowToDigits(low, model.digits, high, model.unit)]);
   }
   return {
     title: momentWords(atS, model),
@@ -86,6 +88,7 @@ function bandSeries(band: ChartBand, model: ChartModel, colour: string, opacity:
 }
 
 function lineSeries(line: ChartLine, model: ChartModel, c: Colours) {
+  const { width, dash } = strokeOf(line);
   return {
     type: 'line',
     id: `line ${line.name}`,
@@ -99,9 +102,9 @@ function lineSeries(line: ChartLine, model: ChartModel, c: Colours) {
     itemStyle: { color: c[line.tone] },
     lineStyle: {
       color: c[line.tone],
-      width: line.quiet ? 1 : 2,
+      width,
       opacity: line.quiet ? 0.45 : 1,
-      ...(line.dashed && { type: [5, 4] }),
+      ...(dash && { type: [...dash] }),
     },
     emphasis: { disabled: true },
   };
@@ -248,7 +251,7 @@ function axisWords(model: ChartModel): (wallMs: number) => string {
   };
 }
 const monthWords = (wallMs: number): string =>
-  new Date(wallMs).toLocaleDateString('en-GB', { month: 'short', year: '2-digit', timeZone: 'UTC' });
+  new Date(wallMs).toLocaleDateString(LOCALE, { month: 'short', year: '2-digit', timeZone: 'UTC' });
 
 /** Everything that the chart library is told. Pure but for the given colours. */
 export function chartOptions(

@@ -1,5 +1,6 @@
 import { Button, ButtonLink } from '../../components/ui/Button';
 import { Choice } from '../../components/ui/Choice';
+import { Heading } from '../../components/ui/Heading';
 import { Notice } from '../../components/ui/Notice';
 import { SearchInput } from '../../components/ui/SearchInput';
 import { Sheet } from '../../components/ui/Sheet';
@@ -9,14 +10,15 @@ import { CAUSE_KINDS } from '../../domain/causes/kinds';
 import { withQuery } from '../../lib/api';
 import type { CauseItem, CausesPage } from '../../schemas/api/causes';
 import { paths } from '../../schemas/paths';
-import { filtered, KIND_TONE, kindWords, lossWords, partsWords } from './words';
+import { causesList } from '../../words/causes';
+import { filtered, KIND_TONE, kindWords, listFinding, lossWords, partsWords } from './words';
 
-const SHOW_WORDS = { open: 'open', over: 'over', all: 'open and over' } as const;
+const SHOW_WORDS = { open: causesList.open, over: causesList.over, all: causesList.openAndOver } as const;
 const SORT_WORDS = {
-  gravity: 'gravest first',
-  newest: 'newest first',
-  oldest: 'oldest first',
-  loss: 'costliest first',
+  gravity: causesList.gravestFirst,
+  newest: causesList.newestFirst,
+  oldest: causesList.oldestFirst,
+  loss: causesList.costliestFirst,
 } as const;
 
 export function KindTag({ kind }: Pick<CauseItem, 'kind'>) {
@@ -30,8 +32,8 @@ export function KindTag({ kind }: Pick<CauseItem, 'kind'>) {
 
 function Line({ cause, page }: { cause: CauseItem; page: CausesPage }) {
   const time = { now: page.at, timeZone: cause.timeZone };
-  const perDay = lossWords(cause.lossWhDay, cause.lossMoneyDay, page.currency, ' a day');
-  const upToNow = lossWords(cause.lossWh, cause.lossMoney, page.currency, ' so far');
+  const perDay = lossWords(cause.lossWhDay, cause.lossMoneyDay, page.currency, causesList.aDay);
+  const upToNow = lossWords(cause.lossWh, cause.lossMoney, page.currency, causesList.soFar);
   return (
     <li className="grid gap-x-6 gap-y-1 py-3 lg:grid-cols-[minmax(0,1fr)_210px_190px]">
       <div className="min-w-0">
@@ -39,12 +41,10 @@ function Line({ cause, page }: { cause: CauseItem; page: CausesPage }) {
           <KindTag kind={cause.kind} />
           {cause.closedAt !== null && (
             <Tag tone="petrol" shape="✓">
-              Over
+              {causesList.over2}
             </Tag>
           )}
-          {cause.reopened > 0 && (
-            <Tag>came back {cause.reopened === 1 ? 'once' : `${cause.reopened} times`}</Tag>
-          )}
+          {cause.reopened > 0 && <Tag>{causesList.cameBackReopened1(cause.reopened)}</Tag>}
         </p>
         <a
           href={paths.cause(cause.id)}
@@ -60,19 +60,21 @@ function Line({ cause, page }: { cause: CauseItem; page: CausesPage }) {
         </p>
       </div>
       <p className="text-sm text-ink-2">
-        since <SiteTime at={cause.since} {...time} zone />
+        {causesList.since}
+        <SiteTime at={cause.since} {...time} zone />
         {cause.closedAt !== null && (
           <span className="block">
-            over <SiteTime at={cause.closedAt} {...time} zone />
+            {causesList.over3}
+            <SiteTime at={cause.closedAt} {...time} zone />
           </span>
         )}
-        {cause.acknowledged && <span className="block">{cause.acknowledged.person} has it</span>}
+        {cause.acknowledged && <span className="block">{causesList.hasIt(cause.acknowledged.person)}</span>}
         {cause.openCase && (
           <a
             href={paths.caseFile(cause.openCase.id)}
             className="target flex items-center text-petrol hover:underline"
           >
-            Case {cause.openCase.number}
+            {causesList.caseOpenCase(cause.openCase.number)}
           </a>
         )}
       </p>
@@ -94,65 +96,76 @@ export function CausesList({ page }: { page: CausesPage }) {
     q: view.q,
     sort: view.sort,
   };
+  const { finding, sentence } = listFinding(page);
   return (
     <>
+      <Heading
+        finding={finding}
+        sentence={sentence}
+        actions={
+          <>
+            <ButtonLink href={paths.lowOutput()}>{causesList.stringsThatMakeLess}</ButtonLink>
+            <ButtonLink href={withQuery(paths.api.causesCsv(), query)}>CSV</ButtonLink>
+          </>
+        }
+      />
       <form action={paths.causes()} className="no-print mb-4 flex flex-wrap items-center gap-x-3 gap-y-2">
         <SearchInput
           name="q"
-          label="Find a cause by words, site, string or serial"
-          placeholder="Words, site, string or serial"
+          label={causesList.findACauseBy}
+          placeholder={causesList.wordsSiteStringOr}
           defaultValue={view.q}
           className="sm:w-[250px]"
         />
         <Choice
           inline
-          label="Show"
+          label={causesList.show}
           name="show"
           defaultValue={view.show}
           options={Object.entries(SHOW_WORDS).map(([value, label]) => ({ value, label }))}
         />
         <Choice
           inline
-          label="Kind"
+          label={causesList.kind}
           name="kind"
           defaultValue={view.kind}
           options={[
-            { value: 'any', label: 'any' },
+            { value: 'any', label: causesList.any },
             ...CAUSE_KINDS.map((kind) => ({ value: kind, label: kindWords(kind) })),
           ]}
         />
         <Choice
           inline
-          label="Site"
+          label={causesList.site}
           name="site"
           defaultValue={view.site ?? ''}
-          options={[{ value: '', label: 'any' }, ...page.sites.map((s) => ({ value: s.id, label: s.name }))]}
+          options={[
+            { value: '', label: causesList.any },
+            ...page.sites.map((s) => ({ value: s.id, label: s.name })),
+          ]}
         />
         <Choice
           inline
-          label="Order"
+          label={causesList.order}
           name="sort"
           defaultValue={view.sort}
           options={Object.entries(SORT_WORDS).map(([value, label]) => ({ value, label }))}
         />
-        <Button type="submit">Show</Button>
-        <ButtonLink href={withQuery(paths.api.causesCsv(), query)} className="sm:ml-auto">
-          CSV
-        </ButtonLink>
+        <Button type="submit">{causesList.show}</Button>
       </form>
       {page.causes.length === 0 ? (
-        <Notice kind="empty" title={filtered(page) ? 'Nothing fits' : 'No cause'}>
+        <Notice kind="empty" title={filtered(page) ? causesList.nothingFits : causesList.noCause}>
           {filtered(page)
-            ? 'Look at all kinds and sites, or use fewer words.'
+            ? causesList.lookAtAllKinds
             : view.show === 'open'
-              ? 'What ended lately is under "over".'
-              : 'Nothing was found in the last 90 days.'}
+              ? causesList.whatEndedLatelyIs
+              : causesList.nothingWasFoundIn}
         </Notice>
       ) : (
         <Sheet
           id="causes"
-          title={view.show === 'over' ? 'Over' : 'Causes'}
-          aside={`${page.causes.length}${page.more ? ' and more: narrow the list' : ''}`}
+          title={view.show === 'over' ? causesList.over2 : causesList.causes}
+          aside={causesList.causesMore(page.causes.length, page.more)}
         >
           <ul className="divide-y divide-rule-faint">
             {page.causes.map((cause) => (

@@ -10,12 +10,13 @@ import { UNITS_CHOSEN_MOST, type WorkbenchView } from '../../schemas/api/workben
 import { unitsChart } from './history-model';
 import { unitsCsvHref, unitsQuery, type UnitsView } from './queries';
 import { unitsInAddress } from './view';
+import { unitsSheet } from '../../words/strings';
 
 const QUANTITIES: readonly { value: UnitQuantity; label: string }[] = [
-  { value: 'voltage', label: 'Voltage' },
-  { value: 'current', label: 'Current' },
-  { value: 'temperature', label: 'Temperature' },
-  { value: 'power', label: 'Power' },
+  { value: 'voltage', label: unitsSheet.voltage },
+  { value: 'current', label: unitsSheet.current },
+  { value: 'temperature', label: unitsSheet.temperature },
+  { value: 'power', label: unitsSheet.power },
 ];
 
 interface Props {
@@ -31,7 +32,7 @@ interface Props {
 /** Lines of chosen units over the time shown, eight at most. */
 export default function UnitsSheet({ page, view, chosen, onView, moment, onMoment }: Props) {
   const { string } = page;
-  const subject = `${page.site.name}, string ${string.name}`;
+  const subject = unitsSheet.siteStringWhich(page.site.name, string.name);
   const asked: UnitsView = {
     quantity: view.unit,
     range: view.range === 'year' ? 'month' : view.range,
@@ -64,10 +65,10 @@ export default function UnitsSheet({ page, view, chosen, onView, moment, onMomen
   return (
     <Sheet
       id="units-chosen"
-      title="Chosen units"
+      title={unitsSheet.chosenUnits}
       aside={
         <Segmented
-          label="Quantity of units"
+          label={unitsSheet.quantityOfUnits}
           options={QUANTITIES}
           value={view.unit}
           onChange={(unit) => onView({ unit })}
@@ -76,7 +77,8 @@ export default function UnitsSheet({ page, view, chosen, onView, moment, onMomen
     >
       <fieldset className="mb-2 flex flex-wrap items-center gap-1">
         <legend className="mb-1 text-sm text-ink-2">
-          Positions, {UNITS_CHOSEN_MOST} at most{full && ': take one out to add another'}
+          {unitsSheet.positionsAtMost(UNITS_CHOSEN_MOST)}
+          {full && unitsSheet.takeOneOutTo}
         </legend>
         {string.slots
           .filter((s) => s.serial !== null)
@@ -95,7 +97,7 @@ export default function UnitsSheet({ page, view, chosen, onView, moment, onMomen
                   disabled={!on && full}
                   onChange={() => toggle(s.position)}
                 />
-                <span className="sr-only">Position </span>
+                <span className="sr-only">{unitsSheet.position}</span>
                 {s.position}
               </label>
             );
@@ -103,16 +105,16 @@ export default function UnitsSheet({ page, view, chosen, onView, moment, onMomen
       </fieldset>
       <NotRead
         error={units.error}
-        title="The lines could not be fetched"
+        title={unitsSheet.theLinesCouldNot}
         kind="failed"
         onRetry={() => units.refetch()}
       />
       {chosen.length === 0 && (
-        <Notice kind="empty" title="No unit is chosen">
-          Choose positions above, or tap a row of the strip below.
+        <Notice kind="empty" title={unitsSheet.noUnitIsChosen}>
+          {unitsSheet.choosePositionsAboveOr}
         </Notice>
       )}
-      {chosen.length > 0 && units.isPending && <p role="status">Fetching the units’ reports …</p>}
+      {chosen.length > 0 && units.isPending && <p role="status">{unitsSheet.fetchingTheUnitsReports}</p>}
       {model && (
         <div className={units.isPlaceholderData ? 'opacity-60' : ''}>
           <TimeChart
@@ -125,12 +127,13 @@ export default function UnitsSheet({ page, view, chosen, onView, moment, onMomen
             onMoment={onMoment}
           />
           <p className="mt-1 text-sm text-ink-2">
+            {units.data?.imported && unitsSheet.imported}
             {units.data?.resolution === 'quarter' &&
-              (view.unit === 'temperature' ? 'Highest of 15 minutes. ' : 'Means of 15 minutes. ')}
-            {view.range === 'year' && 'Single units are kept by quarters of an hour: a month is shown. '}
-            {units.data &&
-              units.data.moves.length > 0 &&
-              'Before a mark the readings of that position are another unit’s.'}
+              (view.unit === 'temperature' ? unitsSheet.highestOf15Minutes : unitsSheet.meansOf15Minutes)}
+            {view.range === 'year' && unitsSheet.singleUnitsAreKept}
+            {units.data && units.data.moves.length > 0 && unitsSheet.beforeAMarkTheReadings}
+            {chosen.some((p) => tones.get(p) === 'rust') && unitsSheet.rustStuckLateOr}
+            {chosen.some((p) => tones.get(p) === 'crimson') && unitsSheet.crimsonNotShuttingDown}
           </p>
         </div>
       )}

@@ -1,6 +1,7 @@
 import { describe, expect, it } from 'vitest';
+import { strokeOf } from '../../components/charts/model';
 import type { StringHistory } from '../../schemas/api/string';
-import { differenceChart, historyChart, laidOver, refined } from './history-model';
+import { differenceChart, historyChart, laidOver, refined, unitsChart } from './history-model';
 
 const DAY = 86_400;
 const MIDNIGHT = Date.UTC(2026, 5, 3) / 1000;
@@ -74,5 +75,35 @@ describe('the history as a chart', () => {
     expect(r.values).toEqual([1, 540, null, 542, 3]);
     expect(r.middle.values).toEqual([550, 3]);
     expect(r.at).toEqual([...r.at].sort((a, b) => a - b));
+  });
+});
+
+describe('chosen units as a chart', () => {
+  it.each([
+    ['all stuck', 'rust'],
+    ['all well', undefined],
+  ] as const)('tells eight apart, %s', (_, tone) => {
+    const positions = [1, 2, 3, 4, 5, 6, 7, 8];
+    const chart = unitsChart(
+      {
+        quantity: 'voltage',
+        unit: 'V',
+        side: 'output',
+        range: 'day',
+        resolution: 'minute',
+        from: MIDNIGHT,
+        to: MIDNIGHT + DAY,
+        timeZone: 'UTC',
+        at: [MIDNIGHT + 36_000],
+        lines: positions.map((position) => ({ position, values: [0.6] })),
+        moves: [],
+        nights: [],
+      },
+      'x',
+      new Map(tone ? positions.map((p) => [p, tone]) : []),
+    );
+    const looks = chart.lines.map((l) => JSON.stringify([l.tone, strokeOf(l)]));
+    expect(new Set(looks).size).toBe(8);
+    if (tone) expect(chart.lines.every((l) => l.tone === tone)).toBe(true);
   });
 });

@@ -1,12 +1,18 @@
 import { fromWall, toWall } from '../../components/charts/local-time';
 import { valueAt, type ChartLine, type ChartMark, type ChartModel } from '../../components/charts/model';
 import type { StringHistory, StringUnits } from '../../schemas/api/string';
+import { historyModel } from '../../words/string-history';
 
-const RANGE = { day: 'a day', week: 'a week', month: 'a month', year: 'a year' } as const;
+const RANGE = {
+  day: historyModel.aDay,
+  week: historyModel.aWeek,
+  month: historyModel.aMonth,
+  year: historyModel.aYear,
+} as const;
 const NAME: Record<StringHistory['quantity'], string> = {
-  voltage: 'Voltage',
-  current: 'Current',
-  power: 'Power',
+  voltage: historyModel.voltage,
+  current: historyModel.current,
+  power: historyModel.power,
 };
 const LINE_DIGITS: Record<string, number> = { V: 0, A: 2, W: 0, kWh: 1 };
 
@@ -122,7 +128,7 @@ function siblingLinesOf(history: StringHistory, shown: Shown): ChartLine[] {
     ? []
     : [
         {
-          name: 'Siblings, middle',
+          name: historyModel.siblingsMiddle,
           at: history.middle.at,
           values: history.middle.values,
           tone: 'petrol',
@@ -138,18 +144,18 @@ export function historyChart(
   shown: Shown = { siblings: 'off', overlay: null, notes: [] },
 ): ChartModel {
   const coarse = history.resolution !== 'minute';
-  const name = history.unit === 'kWh' ? 'Made that day' : NAME[history.quantity];
+  const name = history.unit === 'kWh' ? historyModel.madeThatDay : NAME[history.quantity];
   const { overlay } = shown;
   const peaks = coarse && history.low.some((v, i) => v !== (history.values[i] ?? null));
   return {
-    title: `${subject}: ${NAME[history.quantity].toLowerCase()} over ${RANGE[history.range]}`,
+    title: historyModel.subjectQuantitySaidOverRange(subject, NAME[history.quantity], RANGE[history.range]),
     unit: history.unit,
     digits: LINE_DIGITS[history.unit] ?? 1,
     timeZone: history.timeZone,
     ...(history.range === 'day' ? daylight(history) : { from: history.from, to: history.to }),
     lines: [
       {
-        name: coarse && history.unit !== 'kWh' ? `Mean ${name.toLowerCase()}` : name,
+        name: coarse && history.unit !== 'kWh' ? historyModel.meanName(name) : name,
         at: history.at,
         values: history.values,
         tone: 'ink',
@@ -157,7 +163,7 @@ export function historyChart(
       ...(history.imported.at.length > 0
         ? [
             {
-              name: 'Imported',
+              name: historyModel.imported,
               at: history.imported.at,
               values: history.imported.values,
               tone: 'slate',
@@ -179,10 +185,15 @@ export function historyChart(
       ...siblingLinesOf(history, shown),
     ],
     band: history.expected.at.length
-      ? { name: 'Expected', at: history.expected.at, low: history.expected.low, high: history.expected.high }
+      ? {
+          name: historyModel.expected,
+          at: history.expected.at,
+          low: history.expected.low,
+          high: history.expected.high,
+        }
       : undefined,
     spread: peaks
-      ? { name: 'Lowest to highest', at: history.at, low: history.low, high: history.high }
+      ? { name: historyModel.lowestToHighest, at: history.at, low: history.low, high: history.high }
       : undefined,
     nights: history.nights,
     marks: [...history.marks, ...shown.notes],
@@ -195,14 +206,14 @@ export function differenceChart(history: StringHistory, overlay: Overlay, subjec
   const over = { at: laidOver(history, overlay.history), values: overlay.history.values };
   const within = { minute: 600, quarter: 900, day: 43_200 }[history.resolution];
   return {
-    title: `${subject}: less ${overlay.name}`,
+    title: historyModel.subjectLessOverlay(subject, overlay.name),
     unit: history.unit,
     digits: Math.max(1, LINE_DIGITS[history.unit] ?? 1),
     timeZone: history.timeZone,
     ...(history.range === 'day' ? daylight(history) : { from: history.from, to: history.to }),
     lines: [
       {
-        name: 'Difference',
+        name: historyModel.difference,
         at: history.at,
         values: history.at.map((at, i) => {
           const own = history.values[i] ?? null;
@@ -236,22 +247,25 @@ export function unitsChart(
   subject: string,
   tones: ReadonlyMap<number, 'rust' | 'crimson'>,
 ): ChartModel {
-  let turn = 0;
+  const turns = new Map<string, number>();
+  let others = 0;
   return {
-    title: `${subject}: ${QUANTITY[units.quantity]} of single units${units.quantity === 'voltage' && units.side === 'module' ? ', module side' : ''}`,
+    title: historyModel.ofSingleUnits(subject, QUANTITY[units.quantity], units.quantity, units.side),
     unit: units.unit,
     digits: DIGITS[units.quantity],
     timeZone: units.timeZone,
     ...(units.range === 'day' ? daylight(units) : { from: units.from, to: units.to }),
     lines: units.lines.map((line) => {
       const own = tones.get(line.position);
-      const nth = own ? 0 : turn++;
+      const tone = own ?? TONES[others++ % TONES.length] ?? 'ink';
+      const turn = turns.get(tone) ?? 0;
+      turns.set(tone, turn + 1);
       return {
-        name: `Position ${line.position}`,
+        name: historyModel.positionPosition(line.position),
         at: units.at,
         values: line.values,
-        tone: own ?? TONES[nth % TONES.length] ?? 'ink',
-        dashed: nth >= TONES.length,
+        tone,
+        turn,
       };
     }),
     nights: units.nights,
@@ -260,10 +274,10 @@ export function unitsChart(
       to: null,
       words:
         m.in === null
-          ? `${m.out ?? 'Unit'} taken out at ${m.position}`
+          ? historyModel.takenOutAt(m.out, m.position)
           : m.out === null
-            ? `${m.in} placed at ${m.position}`
-            : `${m.in} in place of ${m.out} at ${m.position}`,
+            ? historyModel.placedAt(m.in, m.position)
+            : historyModel.inPlaceOfAt(m.in, m.out, m.position),
       tone: 'slate',
     })),
     fromZero: units.quantity !== 'temperature' && units.quantity !== 'voltage',
