@@ -1,6 +1,6 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import { figuresOf, lossSteps, type DayLight, type DaySums } from './day-figures';
+import { type DayLight, type DaySums, figuresOf, lossSteps, sameDays } from './day-figures';
 import { yields, type YieldRecord } from './yields';
 
 const P0 = 100_000;
@@ -163,5 +163,20 @@ describe('steps from light to energy', () => {
   });
   it('are none without light', () => {
     expect(lossSteps([{ ...sumsOf('2026-06-01', []), light: null }], [])).toBeNull();
+  });
+});
+
+describe('the same days of two years', () => {
+  const day = (name: string, energyAc: number) => ({ day: name, energyAc });
+
+  it('are those of which both have data', () => {
+    const now = [day('2026-11-01', 10), day('2026-11-03', 30)];
+    const before = [day('2025-11-01', 20), day('2025-11-02', 20), day('2025-11-03', 20)];
+    expect(sameDays(now, before)).toEqual({ now: 40, before: 40, days: 2 });
+    expect(sameDays([], before)).toEqual({ now: 0, before: 0, days: 0 });
+  });
+
+  it('put 29 February beside the 28th', () => {
+    expect(sameDays([day('2028-02-29', 5)], [day('2027-02-28', 4)])).toEqual({ now: 5, before: 4, days: 1 });
   });
 });

@@ -1,3 +1,5 @@
+import { yearBefore } from './period';
+
 /** Yields and ratios of any span from sums of its days, by IEC 61724-1 as `yields` has them from records. */
 
 /** One local day of one site, or several days summed. Energies Wh, insolation Wh/m²; null: the day has no sensor in the plane, or is older. */
@@ -195,4 +197,21 @@ export function lossSteps(days: readonly DaySums[], named: readonly NamedLoss[])
     { key: 'rest', label: 'Dirt, shade, wiring, conversion', kWh: rest },
     { key: 'made', label: 'Went out as AC', kWh: made },
   ];
+}
+
+/** Energy of the days that both years have, Wh: a day without data is held against nothing. */
+export function sameDays(
+  now: readonly Pick<DaySums, 'day' | 'energyAc'>[],
+  before: readonly Pick<DaySums, 'day' | 'energyAc'>[],
+): { now: number; before: number; days: number } {
+  const then = new Map(before.map((d) => [d.day, d.energyAc]));
+  const sum = { now: 0, before: 0, days: 0 };
+  for (const { day, energyAc } of now) {
+    const earlier = then.get(yearBefore(day));
+    if (earlier === undefined) continue;
+    sum.now += energyAc;
+    sum.before += earlier;
+    sum.days += 1;
+  }
+  return sum;
 }

@@ -78,6 +78,13 @@ export function yearBefore(day: string): string {
   return before.endsWith('-02-29') ? `${before.slice(0, 8)}28` : before;
 }
 
+/** Whether today lies in it: its days are not all over. */
+export const isRunning = (period: Pick<Period, 'from' | 'before'>, today: string): boolean =>
+  today >= period.from && today < period.before;
+
+/** Whether sums of so many days are held against each other: with more than one day in twenty missing, data would be. */
+export const daysAlike = (now: number, before: number): boolean => 20 * Math.abs(now - before) <= before;
+
 /** The part of a period that has been: from the plant's first day to today; null where there is none. */
 export function elapsedOf(
   period: Pick<Period, 'from' | 'before'>,

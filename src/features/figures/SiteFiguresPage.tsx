@@ -6,7 +6,8 @@ import { Sheet } from '../../components/ui/Sheet';
 import { Table } from '../../components/ui/Table';
 import { monthName } from '../../domain/output/period';
 import { DayCalendar, YearCalendar, type CalendarDay } from '../../drawings/DayCalendar';
-import { LossBars, type LossBar } from '../../drawings/LossBars';
+import { type LossBar } from '../../drawings/loss-bars';
+import { LossBars } from '../../drawings/LossBars';
 import { energy, number, percent, quantity } from '../../drawings/numbers';
 import { withQuery } from '../../lib/api';
 import type { SiteFigures } from '../../schemas/api/figures';
@@ -77,7 +78,7 @@ export function SiteFiguresPage({ f, words }: Props) {
             )}
             <Losses f={f} />
           </Sheet>
-          <Sheet id="calendar" title={siteFiguresPage.dayByDay} aside={siteFiguresPage.kWhKWpTheDeeper}>
+          <Sheet id="calendar" title={siteFiguresPage.dayByDay} aside={siteFiguresPage.kWhKWpTheDeeper} flush>
             {month ? (
               <DayCalendar days={days} caption={siteFiguresPage.daysOf(f.period.label)} />
             ) : (
@@ -88,9 +89,9 @@ export function SiteFiguresPage({ f, words }: Props) {
               />
             )}
             <p className="mt-3 text-sm text-ink-2">{siteFiguresPage.rustEdgeMarksDay(ofDays)}</p>
+            <DayTable f={f} />
           </Sheet>
           <YearOnYear months={f.months} year={Number(f.period.key.slice(0, 4))} today={f.today} />
-          <DayTable f={f} />
           <p className="max-w-[76ch] text-sm text-ink-2">{siteFiguresPage.yieldsAndRatiosFollow}</p>
         </div>
       ) : (
@@ -127,66 +128,64 @@ function Losses({ f }: { f: SiteFigures }) {
 
 function DayTable({ f }: { f: SiteFigures }) {
   return (
-    <Sheet id="days" title={siteFiguresPage.theDaysAsA} flush>
-      <details>
-        <summary className="target cursor-pointer text-petrol">
-          {siteFiguresPage.daysDays(f.days.length)}
-        </summary>
-        <Table
-          caption={siteFiguresPage.daysOf(f.period.label)}
-          rows={f.days}
-          rowKey={(d) => d.day}
-          columns={[
-            { key: 'day', label: siteFiguresPage.day, cell: (d) => d.day },
-            {
-              key: 'energy',
-              label: siteFiguresPage.energy,
-              numeric: true,
-              cell: (d) => energy(d.figures.energyKWh * 1000),
-            },
-            {
-              key: 'yield',
-              label: siteFiguresPage.kWhKWp,
-              numeric: true,
-              cell: (d) => number(d.figures.specificYieldKWhKWp, 2),
-            },
-            {
-              key: 'ratio',
-              label: siteFiguresPage.ratio,
-              numeric: true,
-              cell: (d) => number(d.figures.performanceRatio, 3),
-            },
-            {
-              key: 'stc',
-              label: siteFiguresPage.at25C,
-              numeric: true,
-              from: 'md',
-              cell: (d) => number(d.figures.performanceRatioStc, 3),
-            },
-            {
-              key: 'light',
-              label: siteFiguresPage.kWhM,
-              numeric: true,
-              from: 'sm',
-              cell: (d) => number(d.figures.insolationKWhM2, 2),
-            },
-            {
-              key: 'lost',
-              label: siteFiguresPage.lost,
-              numeric: true,
-              from: 'md',
-              cell: (d) => quantity(d.figures.lostMinutes, 'min'),
-            },
-            {
-              key: 'data',
-              label: siteFiguresPage.data,
-              numeric: true,
-              from: 'sm',
-              cell: (d) => percent(d.figures.completeness),
-            },
-          ]}
-        />
-      </details>
-    </Sheet>
+    <details id="days" className="-mb-2 mt-1">
+      <summary className="target cursor-pointer leading-9 text-petrol">
+        {siteFiguresPage.daysDays(f.days.length)}
+      </summary>
+      <Table
+        caption={siteFiguresPage.daysOf(f.period.label)}
+        rows={f.days}
+        rowKey={(d) => d.day}
+        columns={[
+          { key: 'day', label: siteFiguresPage.day, cell: (d) => d.day },
+          {
+            key: 'energy',
+            label: siteFiguresPage.energy,
+            numeric: true,
+            cell: (d) => energy(d.figures.energyKWh * 1000),
+          },
+          {
+            key: 'yield',
+            label: siteFiguresPage.kWhKWp,
+            numeric: true,
+            cell: (d) => number(d.figures.specificYieldKWhKWp, 2),
+          },
+          {
+            key: 'ratio',
+            label: siteFiguresPage.ratio,
+            numeric: true,
+            cell: (d) => number(d.figures.performanceRatio, 3),
+          },
+          {
+            key: 'stc',
+            label: siteFiguresPage.at25C,
+            numeric: true,
+            from: 'md',
+            cell: (d) => number(d.figures.performanceRatioStc, 3),
+          },
+          {
+            key: 'light',
+            label: siteFiguresPage.kWhM,
+            numeric: true,
+            from: 'sm',
+            cell: (d) => number(d.figures.insolationKWhM2, 2),
+          },
+          {
+            key: 'lost',
+            label: siteFiguresPage.lost,
+            numeric: true,
+            from: 'md',
+            cell: (d) => quantity(d.figures.lostMinutes, 'min'),
+          },
+          {
+            key: 'data',
+            label: siteFiguresPage.data,
+            numeric: true,
+            from: 'sm',
+            cell: (d) => percent(d.figures.completeness),
+          },
+        ]}
+      />
+    </details>
   );
 }

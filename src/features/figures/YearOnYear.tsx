@@ -1,13 +1,16 @@
 import { Sheet } from '../../components/ui/Sheet';
 import { Table } from '../../components/ui/Table';
 import { monthName } from '../../domain/output/period';
-import { energy, number, percent } from '../../drawings/numbers';
+import { energy, number } from '../../drawings/numbers';
+import { yearChange } from '../../drawings/year-change';
 import { YearBars } from '../../drawings/YearBars';
 import { yearOnYear } from '../../words/figures';
 
 interface Month {
   year: number;
   month: number;
+  /** Days of which there is data. */
+  days?: number;
   energyKWh: number;
   performanceRatio?: number | null;
 }
@@ -22,7 +25,6 @@ export function YearOnYear({
   year: number;
   today: string;
 }) {
-  const running = (month: number): boolean => today.startsWith(`${year}-${String(month).padStart(2, '0')}`);
   const of = (y: number, month: number) => months.find((m) => m.year === y && m.month === month);
   const rows = Array.from({ length: 12 }, (_, i) => ({
     month: i + 1,
@@ -40,7 +42,7 @@ export function YearOnYear({
       <YearBars
         label={yearOnYear.energyMonthByMonth(
           year,
-          best?.now ? ` Most in ${monthName(best.month)}: ${energy(best.now.energyKWh * 1000)}.` : '',
+          best?.now ? yearOnYear.mostIn(monthName(best.month), best.now.energyKWh) : '',
         )}
         monthLabel={monthName}
         months={rows.map((r) => ({
@@ -49,8 +51,8 @@ export function YearOnYear({
           before: r.before?.energyKWh ?? null,
         }))}
       />
-      <details className="mt-3">
-        <summary className="target cursor-pointer text-petrol">{yearOnYear.asATable}</summary>
+      <details className="-mb-2 mt-1">
+        <summary className="target cursor-pointer leading-9 text-petrol">{yearOnYear.asATable}</summary>
         <Table
           caption={yearOnYear.energyByMonthAnd(year)}
           rows={rows}
@@ -73,10 +75,7 @@ export function YearOnYear({
               key: 'change',
               label: yearOnYear.change,
               numeric: true,
-              cell: (r) =>
-                r.now && r.before && r.before.energyKWh > 0 && !running(r.month)
-                  ? `${r.now.energyKWh >= r.before.energyKWh ? '+' : '−'}${percent(Math.abs(r.now.energyKWh / r.before.energyKWh - 1))}`
-                  : '–',
+              cell: (r) => yearChange(`${year}-${String(r.month).padStart(2, '0')}`, r.now, r.before, today),
             },
             ...(ratios
               ? [

@@ -3,6 +3,7 @@ import type { Figures, LossStep } from '../../domain/output/day-figures';
 import { periodOf, type Period } from '../../domain/output/period';
 import { id } from './now';
 import { typedNumber } from '../typed-number';
+import { fleetFiguresSorts } from '../lists-and-limits';
 
 /** What figures are asked for, as it stands in the address: a month, a year, or (unreadable, absent) the present one. */
 export const figuresView = z.object({
@@ -37,6 +38,8 @@ export interface Money {
 export interface Compared {
   nowKWh: number;
   beforeKWh: number;
+  /** Days that are left out of both, as no data came on them. */
+  missing: number;
 }
 
 export interface DayFigures {
@@ -78,7 +81,8 @@ export interface SiteFigures {
     kWh: number;
   }[];
   /** This calendar year and the one before it, month by month. */
-  months: { year: number; month: number; energyKWh: number; performanceRatio: number | null }[];
+  /** `days`: of which there is data. */
+  months: { year: number; month: number; days: number; energyKWh: number; performanceRatio: number | null }[];
   tariffs: { id: string; from: string; priceKWh: number; by: string }[];
 }
 
@@ -102,17 +106,6 @@ export interface FleetFigures {
   without: string[];
 }
 
-export const fleetFiguresSorts = [
-  'site',
-  'energy',
-  'change',
-  'specific_yield',
-  'ratio',
-  'ratio_stc',
-  'availability',
-  'completeness',
-  'worth',
-] as const;
 export type FleetFiguresSort = (typeof fleetFiguresSorts)[number];
 export const fleetFiguresView = figuresView.extend({
   sort: z.enum(fleetFiguresSorts).catch('site'),

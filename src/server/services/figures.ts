@@ -1,5 +1,13 @@
-import { figuresOf, lossSteps, type DaySums } from '../../domain/output/day-figures';
-import { dayAfter, elapsedOf, periodOf, yearBefore, type Period } from '../../domain/output/period';
+import { figuresOf, lossSteps, sameDays, type DaySums } from '../../domain/output/day-figures';
+import {
+  dayAfter,
+  daysAlike,
+  daysBetween,
+  elapsedOf,
+  periodOf,
+  yearBefore,
+  type Period,
+} from '../../domain/output/period';
 import { worthOf } from '../../domain/output/tariff';
 import { thresholdsOf } from '../../domain/settings/thresholds';
 import { LOSS_WORDS } from '../../domain/output/loss-words';
@@ -51,7 +59,10 @@ const wholeDays = (
   before: elapsed.before > today ? today : elapsed.before,
 });
 
-/** The same whole days a year earlier, where the plant was there on all of them. */
+/**
+ * The same whole days a year earlier, where the plant was there on all of them. Days without data are left out of both
+ * years: what did not come is no loss.
+ */
 async function comparison(
   tx: Tx,
   site: FiguresSiteRow,
@@ -63,9 +74,13 @@ async function comparison(
   if (site.firstDay === null || site.firstDay > from) return null;
   const before = dayAfter(yearBefore(dayAfter(whole.before, -1)));
   const days = await siteSums(tx, site.id, { from, before });
-  if (days.length === 0) return null;
-  const now = sums.filter((d) => d.day < whole.before).reduce((sum, d) => sum + d.energyAc, 0);
-  return { nowKWh: now / 1000, beforeKWh: days.reduce((sum, d) => sum + d.energyAc, 0) / 1000 };
+  const same = sameDays(
+    sums.filter((d) => d.day < whole.before),
+    days,
+  );
+  if (same.days === 0) return null;
+  const missing = daysBetween(whole.from, whole.before) - same.days;
+  return { nowKWh: same.now / 1000, beforeKWh: same.before / 1000, missing };
 }
 
 async function importedIn(tx: Tx, siteId: number, period: Period): Promise<SiteFigures['imported']> {
@@ -145,6 +160,7 @@ export async function siteFigures(
     months: months.map((m) => ({
       year: Number(m.day.slice(0, 4)),
       month: Number(m.day.slice(5, 7)),
+      days: m.days,
       energyKWh: m.energyAc / 1000,
       performanceRatio: figuresOf([m], m.days).performanceRatio,
     })),
@@ -183,7 +199,10 @@ export async function fleetFigures(tx: Tx, key: string | undefined, at: Date): P
     rows.push({
       site: { id: site.ref, name: site.name, place: site.place },
       now: figuresOf([entry], Math.max(own?.days ?? 0, entry.days)),
-      compared: before && made ? { nowKWh: made.energyAc / 1000, beforeKWh: before.energyAc / 1000 } : null,
+      compared:
+        before && made && daysAlike(made.days, before.days)
+          ? { nowKWh: made.energyAc / 1000, beforeKWh: before.energyAc / 1000, missing: 0 }
+          : null,
       worth: money ? { money: money.money, unpricedKWh: money.unpriced / 1000 } : null,
     });
   }
@@ -233,6 +252,7 @@ function totals(
         ? {
             nowKWh: compared.reduce((sum, c) => sum + c.nowKWh, 0),
             beforeKWh: compared.reduce((sum, c) => sum + c.beforeKWh, 0),
+            missing: 0,
           }
         : null,
     worth:

@@ -1,9 +1,9 @@
-import { figuresOf } from '../../domain/output/day-figures';
+import { figuresOf, sameDays } from '../../domain/output/day-figures';
 import { lastPeriod, type Every, type LetterPeriod } from '../../domain/output/letter-period';
 import { dayAfter, daysBetween, yearBefore } from '../../domain/output/period';
 import { worthOf } from '../../domain/output/tariff';
 import type { Actor } from '../../domain/access/permissions';
-import { counted, energy, money, percent } from '../../drawings/numbers';
+import { energy, money, percent } from '../../drawings/numbers';
 import { longDate } from '../../drawings/times';
 import { paths } from '../../schemas/paths';
 import { publicUrl } from '../config';
@@ -22,6 +22,7 @@ import {
   type AskedLetter,
 } from '../queries/roof-letters';
 import { visibleSite } from '../queries/visible-site';
+import { roofLetters } from '../../words/letters-sent';
 
 /** The letter about a roof, each week or month, for whoever asked for it. */
 
@@ -101,7 +102,8 @@ async function partsOf(tx: Tx, one: AskedLetter, period: LetterPeriod) {
     from: yearBefore(period.from),
     before: dayAfter(yearBefore(dayAfter(period.before, -1))),
   });
-  const before = earlier.length === asked ? earlier.reduce((sum, d) => sum + d.energyAc, 0) / 1000 : null;
+  // a day without data is held against nothing
+  const same = earlier.length === asked ? sameDays(days, earlier) : null;
   const prices = (await tariffsOf(tx, [one.siteId])).get(one.siteId) ?? [];
   const worth = worthOf(
     days.map((d) => ({ day: d.day, energyKWh: d.energyAc / 1000 })),
@@ -115,55 +117,59 @@ async function partsOf(tx: Tx, one: AskedLetter, period: LetterPeriod) {
   const made = energy(now.energyKWh * 1000);
   const finding =
     days.length === 0
-      ? `No data came from ${one.siteName} in ${period.label}`
-      : `${one.siteName} made ${made} in ${period.label}`;
+      ? roofLetters.noDataCameFrom(one.siteName, period.label)
+      : roofLetters.madeIn(one.siteName, made, period.label);
   return {
-    greeting: `Hello ${one.personName},`,
+    greeting: roofLetters.helloPersonName(one.personName),
     finding,
     paragraphs: [
       days.length === 0
-        ? `Nothing is known of what your roof made. ${one.organisation} sees that too.`
+        ? roofLetters.nothingIsKnownOf(one.organisation)
         : [
-            before !== null && before > 0 ? `${changeSentence(now.energyKWh, before)} a year before.` : '',
-            now.completeness < NO_DATA_BELOW
-              ? `${percent(1 - now.completeness)} of the readings are missing, so it may have been more.`
+            same !== null && same.before > 0
+              ? roofLetters.yearBefore(changeSentence(same), same.days, asked)
               : '',
+            now.completeness < NO_DATA_BELOW ? roofLetters.ofTheReadingsAre(now.completeness) : '',
             now.lostMinutes > 0
-              ? `It stood still for ${now.lostMinutes < 90 ? counted(now.lostMinutes, 'minute') : `${Math.round(now.lostMinutes / 60)} hours`} of daylight${now.lostMinutesGrid >= now.lostMinutes ? ', because the grid was gone' : ''}.`
+              ? roofLetters.itStoodStillFor(
+                  now.lostMinutes,
+                  Math.round(now.lostMinutes / 60),
+                  now.lostMinutesGrid,
+                )
               : '',
           ]
             .filter(Boolean)
-            .join(' ') || 'Nothing stood out.',
+            .join(' ') || roofLetters.nothingStoodOut,
     ],
     figures: [
-      ['Energy', days.length === 0 ? 'not known' : made],
+      [roofLetters.energy, days.length === 0 ? roofLetters.notKnown : made],
       ...(best
-        ? [['Best day', `${longDate(`${best.day}T12:00:00Z`, 'UTC')}, ${energy(best.energyAc)}`]]
+        ? [[roofLetters.bestDay, `${longDate(`${best.day}T12:00:00Z`, 'UTC')}, ${energy(best.energyAc)}`]]
         : []),
-      ...(one.currency && worth ? [['Worth, at your price', money(worth.money, one.currency)]] : []),
-      ['Readings that came', percent(now.completeness)],
+      ...(one.currency && worth ? [[roofLetters.worthAtYourPrice, money(worth.money, one.currency)]] : []),
+      [roofLetters.readingsThatCame, percent(now.completeness)],
       [
-        'Last shutdown test',
+        roofLetters.lastShutdownTest,
         test
-          ? `${longDate(test.at, 'UTC')}, ${test.result === 'passed' ? 'passed' : test.result === 'failed' ? 'not passed: treat the roof as live' : 'not measured with a meter'}`
-          : 'none on record',
+          ? `${longDate(test.at, 'UTC')}, ${test.result === 'passed' ? 'passed' : test.result === 'failed' ? roofLetters.notPassedTreatThe : roofLetters.notMeasuredWithA}`
+          : roofLetters.noneOnRecord,
       ],
     ] as [string, string][],
     caution: {
-      strong: 'Modules stay live in light.',
-      rest: 'Even shut down, every module and the cables right at it can give a dangerous shock. Leave the roof to qualified people.',
+      strong: roofLetters.modulesStayLiveIn,
+      rest: roofLetters.evenShutDownEvery,
     },
-    action: { words: 'Look at your roof', href: `${publicUrl()}${paths.customer(one.siteRef)}` },
-    footer: `${one.organisation} looks after this roof${one.phone ? `: ${one.phone}` : ''}. You asked for this letter each ${one.every}.`,
+    action: { words: roofLetters.lookAtYourRoof, href: `${publicUrl()}${paths.customer(one.siteRef)}` },
+    footer: roofLetters.organisationLooksAfterThis(one.organisation, one.phone, one.every),
     wayOut: {
-      words: 'Choose how often it comes, or end it',
+      words: roofLetters.chooseHowOftenIt,
       href: `${publicUrl()}${paths.customer(one.siteRef)}#letter`,
     },
   };
 }
 
-function changeSentence(now: number, before: number): string {
-  const change = now / before - 1;
-  if (Math.abs(change) < 0.02) return 'That is about as much as in the same days';
-  return `That is ${percent(Math.abs(change))} ${change < 0 ? 'less' : 'more'} than in the same days`;
+function changeSentence(same: { now: number; before: number }): string {
+  const change = same.now / same.before - 1;
+  if (Math.abs(change) < 0.02) return roofLetters.thatIsAboutAs;
+  return roofLetters.thatIsThanIn(Math.abs(change), change);
 }

@@ -1,12 +1,15 @@
 import { monthName } from '../../../domain/output/period';
+import { laidBars } from '../../../drawings/loss-bars';
 import { energy, number, percent, quantity } from '../../../drawings/numbers';
 import { PAPER } from '../../../drawings/paint';
 import { longDate } from '../../../drawings/times';
+import { yearChange } from '../../../drawings/year-change';
 import type { SiteFigures } from '../../../schemas/api/figures';
 import { fileName } from '../csv';
 import { fingerprintOf } from '../fingerprint';
 import { Paper } from '../pdf/paper';
 import { siteWords, type SiteWords } from './words';
+import { papersFiguresMonthReport } from '../../../words/papers-figures';
 
 /**
  * A month on paper: what was made, where the rest went, day by day, and what was wrong.
@@ -34,7 +37,7 @@ export async function monthReportPdf(f: SiteFigures, logo: Buffer | null = null)
     { title: `${f.site.name}: ${period.label}`, author: f.site.organisation, at },
     {
       head: `${f.site.name} · ${period.label}`,
-      foot: `As of ${date} · fingerprint of the data (SHA-256) ${fingerprint.slice(0, 32)}`,
+      foot: papersFiguresMonthReport.asOfFingerprintOf(date, fingerprint.slice(0, 32)),
     },
   );
   paper.space(10);
@@ -42,11 +45,10 @@ export async function monthReportPdf(f: SiteFigures, logo: Buffer | null = null)
     paper.figure(44, (x, y) => {
       paper.pen.image(logo, x, y, { fit: [150, 36] });
     });
-  paper.text(`${f.site.organisation} · month report`, { size: 11, colour: PAPER.ink2 });
+  paper.text(papersFiguresMonthReport.monthReport(f.site.organisation), { size: 11, colour: PAPER.ink2 });
   paper.text(words.finding, { size: 22, weight: 600, leading: 1.2 });
   paper.text(words.sentence, { size: 11.5, colour: PAPER.ink2 });
-  if (f.elapsed?.running)
-    paper.text(`The month is not over: the figures stand as of ${date}.`, { colour: PAPER.rustInk });
+  if (f.elapsed?.running) paper.text(papersFiguresMonthReport.theMonthIsNot(date), { colour: PAPER.rustInk });
   figures(paper, words);
   if (words.bars.length > 0) light(paper, words);
   dayBars(paper, words);
@@ -58,7 +60,7 @@ export async function monthReportPdf(f: SiteFigures, logo: Buffer | null = null)
 }
 
 function figures(paper: Paper, { cards }: SiteWords): void {
-  paper.heading('Figures', 2);
+  paper.heading(papersFiguresMonthReport.figures, 2);
   const width = paper.width / 3;
   for (let i = 0; i < cards.length; i += 3)
     paper.figure(78, (x, y) => {
@@ -72,35 +74,22 @@ function figures(paper: Paper, { cards }: SiteWords): void {
 }
 
 function light(paper: Paper, { bars }: SiteWords): void {
-  paper.heading('Where the light went', 2);
-  const whole = Math.max(1e-9, bars[0]?.kWh ?? 0);
+  paper.heading(papersFiguresMonthReport.whereTheLightWent, 2);
   const fill = { ink: PAPER.ink3, rust: PAPER.rust, slate: PAPER.slate, petrol: PAPER.petrol };
   const room = paper.width - 160 - 120;
-  let left = whole;
-  for (const bar of bars) {
-    const to = bar.total ? bar.kWh : left;
-    const from = bar.total ? 0 : left - bar.kWh;
-    left = bar.total ? bar.kWh : from;
+  for (const bar of laidBars(bars))
     paper.figure(17, (x, y) => {
       paper.setAt(bar.label, x, y, 154, { size: 8.5 });
-      const start = (Math.min(from, to) / whole) * room;
-      const wide = Math.max(1, (Math.abs(to - from) / whole) * room);
-      paper.pen.rect(x + 160 + start, y + 1, Math.min(wide, room), 9).fill(fill[bar.tone]);
-      const sign = bar.total ? '' : bar.kWh >= 0 ? '−' : '+';
-      paper.setAt(
-        `${sign}${energy(Math.abs(bar.kWh) * 1000)} · ${percent(Math.abs(bar.kWh) / whole, 1)}`,
-        x + paper.width - 115,
-        y,
-        115,
-        { size: 8.5, align: 'right' },
-      );
+      paper.pen
+        .rect(x + 160 + bar.start * room, y + 1, Math.max(1, bar.width * room), 9)
+        .fill(fill[bar.tone]);
+      paper.setAt(bar.words, x + paper.width - 115, y, 115, { size: 8.5, align: 'right' });
     });
-  }
 }
 
 function dayBars(paper: Paper, { days, ofDays }: SiteWords): void {
   if (days.length === 0) return;
-  paper.heading('Day by day', 2);
+  paper.heading(papersFiguresMonthReport.dayByDay, 2);
   const height = 92;
   paper.figure(height + 26, (x, y) => {
     const step = paper.width / Math.max(28, days.length);
@@ -123,7 +112,7 @@ function dayBars(paper: Paper, { days, ofDays }: SiteWords): void {
       .strokeColor(PAPER.ink3)
       .stroke();
   });
-  paper.text(`${ofDays} A rust edge marks a day with missing data or lost light.`, {
+  paper.text(papersFiguresMonthReport.rustEdgeMarksDay(ofDays), {
     size: 8.5,
     colour: PAPER.ink2,
   });
@@ -135,61 +124,56 @@ function years(paper: Paper, { months, period, today }: SiteFigures): void {
     const of = (y: number) => months.find((m) => m.year === y && m.month === i + 1);
     return { month: i + 1, now: of(year), before: of(year - 1) };
   }).filter((r) => r.now ?? r.before);
-  paper.heading(`${year} beside ${year - 1}`, 2);
+  paper.heading(papersFiguresMonthReport.yearBesideYear(year), 2);
   paper.table(
     [
-      { header: 'Month', share: 2 },
+      { header: papersFiguresMonthReport.month, share: 2 },
       { header: String(year), share: 2, align: 'right' },
       { header: String(year - 1), share: 2, align: 'right' },
-      { header: 'Change', share: 1.4, align: 'right' },
-      { header: `Ratio ${year}`, share: 1.4, align: 'right' },
+      { header: papersFiguresMonthReport.change, share: 1.4, align: 'right' },
+      { header: papersFiguresMonthReport.ratioYear(year), share: 1.4, align: 'right' },
     ],
     rows.map(({ month, now, before }) => [
       monthName(month),
       now ? energy(now.energyKWh * 1000) : '–',
       before ? energy(before.energyKWh * 1000) : '–',
-      now &&
-      before &&
-      before.energyKWh > 0 &&
-      Number(today.slice(0, 4)) * 12 + Number(today.slice(5, 7)) > year * 12 + month
-        ? `${now.energyKWh >= before.energyKWh ? '+' : '−'}${percent(Math.abs(now.energyKWh / before.energyKWh - 1))}`
-        : '–',
+      yearChange(`${year}-${String(month).padStart(2, '0')}`, now, before, today),
       number(now?.performanceRatio, 3),
     ]),
   );
 }
 
 function causes(paper: Paper, { losses, site }: SiteFigures): void {
-  paper.heading('What was wrong', 2);
+  paper.heading(papersFiguresMonthReport.whatWasWrong, 2);
   paper.table(
     [
-      { header: 'Cause', share: 5 },
-      { header: 'Since', share: 2 },
-      { header: 'Until', share: 2 },
-      { header: 'Loss in the month', share: 2, align: 'right' },
+      { header: papersFiguresMonthReport.cause, share: 5 },
+      { header: papersFiguresMonthReport.since, share: 2 },
+      { header: papersFiguresMonthReport.until, share: 2 },
+      { header: papersFiguresMonthReport.lossInTheMonth, share: 2, align: 'right' },
     ],
     losses.map((l) => [
       l.headline,
       longDate(l.since, site.timeZone),
-      l.closedAt ? longDate(l.closedAt, site.timeZone) : 'still there',
-      l.kWh > 0 ? energy(l.kWh * 1000) : 'not known',
+      l.closedAt ? longDate(l.closedAt, site.timeZone) : papersFiguresMonthReport.stillThere,
+      l.kWh > 0 ? energy(l.kWh * 1000) : papersFiguresMonthReport.notKnown,
     ]),
-    'No cause was found in this month.',
+    papersFiguresMonthReport.noCauseWasFound,
   );
 }
 
 function table(paper: Paper, { days }: SiteFigures): void {
-  paper.heading('The days', 2);
+  paper.heading(papersFiguresMonthReport.theDays, 2);
   paper.table(
     [
-      { header: 'Day', share: 2 },
-      { header: 'Energy', share: 1.7, align: 'right' },
+      { header: papersFiguresMonthReport.day, share: 2 },
+      { header: papersFiguresMonthReport.energy, share: 1.7, align: 'right' },
       { header: 'kWh/kWp', share: 1.4, align: 'right' },
       { header: 'kWh/m²', share: 1.4, align: 'right' },
-      { header: 'Ratio', share: 1.2, align: 'right' },
-      { header: 'At 25 °C', share: 1.2, align: 'right' },
-      { header: 'Lost', share: 1.3, align: 'right' },
-      { header: 'Data', share: 1.2, align: 'right' },
+      { header: papersFiguresMonthReport.ratio, share: 1.2, align: 'right' },
+      { header: papersFiguresMonthReport.at25C, share: 1.2, align: 'right' },
+      { header: papersFiguresMonthReport.lost, share: 1.3, align: 'right' },
+      { header: papersFiguresMonthReport.data, share: 1.2, align: 'right' },
     ],
     days.map(({ day, figures: d }) => [
       day,
@@ -205,9 +189,6 @@ function table(paper: Paper, { days }: SiteFigures): void {
 }
 
 function method(paper: Paper): void {
-  paper.heading('How it is reckoned', 3);
-  paper.text(
-    'Yields and ratios follow IEC 61724-1. Each counts only quarters of an hour that have all it needs; how much that was stands beside it. Light is what the sensor in the plane measures: strings in other planes are measured by it too. Losses of causes are estimates and may overlap with dirt and shade. Wakeline watches and never switches; no figure here says that anything may be touched.',
-    { size: 8.5, colour: PAPER.ink2 },
-  );
+  paper.heading(papersFiguresMonthReport.howItIsReckoned, 3);
+  paper.text(papersFiguresMonthReport.yieldsAndRatiosFollow, { size: 8.5, colour: PAPER.ink2 });
 }

@@ -1,17 +1,10 @@
+import { isRunning } from '../../../domain/output/period';
 import type { CalendarDay } from '../../../drawings/DayCalendar';
-import type { LossBar } from '../../../drawings/LossBars';
-import {
-  counted,
-  energy,
-  listed,
-  money,
-  number,
-  percent,
-  quantity,
-  UNKNOWN,
-} from '../../../drawings/numbers';
+import type { LossBar } from '../../../drawings/loss-bars';
+import { energy, listed, money, number, percent, quantity, UNKNOWN } from '../../../drawings/numbers';
 import { longDate } from '../../../drawings/times';
 import type { Compared, FleetFigures, SiteFigures } from '../../../schemas/api/figures';
+import { papersFiguresWords } from '../../../words/papers-figures';
 
 /** What figures say in words; pages and the report on paper use the same. */
 
@@ -28,52 +21,59 @@ const ABOUT = 0.01;
 export function changeWords(compared: Compared | null, than: string): string | null {
   if (compared === null || !(compared.beforeKWh > 0)) return null;
   const change = compared.nowKWh / compared.beforeKWh - 1;
-  if (Math.abs(change) < ABOUT) return `about as much as ${than}`;
-  return `${percent(Math.abs(change))} ${change < 0 ? 'less' : 'more'} than ${than}`;
+  if (Math.abs(change) < ABOUT) return papersFiguresWords.aboutAsMuchAs(than);
+  return papersFiguresWords.changeChangeThanThan(Math.abs(change), change, than);
 }
 
-const yearBeforeLabel = ({ period, elapsed }: SiteFigures | (FleetFigures & { elapsed?: null })): string => {
+const yearBeforeLabel = ({
+  period,
+  elapsed,
+  compared,
+}: SiteFigures | (FleetFigures & { elapsed?: null })): string => {
   const year = Number(period.key.slice(0, 4)) - 1;
   const label = period.kind === 'year' ? String(year) : `${period.label.split(' ')[0] ?? ''} ${year}`;
-  return elapsed?.running ? `the same whole days of ${label}` : label;
+  if (compared && compared.missing > 0) return papersFiguresWords.theSameDaysOf(label);
+  return elapsed?.running ? papersFiguresWords.theSameWholeDays(label) : label;
 };
 
 /** Whether the period is not over. */
 const running = (f: { today: string; period: SiteFigures['period'] }): boolean =>
-  f.today < f.period.before && f.today >= f.period.from;
+  isRunning(f.period, f.today);
 
 export function siteFinding(f: SiteFigures): { finding: string; sentence: string } {
   const { now, period, elapsed, site } = f;
   if (!elapsed || !now)
     return {
-      finding: `Nothing is on record for ${period.label}`,
+      finding: papersFiguresWords.nothingIsOnRecord(period.label),
       sentence:
         site.firstDay === null
-          ? `${site.name} has not made any energy that Wakeline knows of.`
+          ? papersFiguresWords.hasNotMadeAny(site.name)
           : period.from > f.today
-            ? 'It lies ahead.'
-            : `The record of ${site.name} begins on ${day(site.firstDay)}.`,
+            ? papersFiguresWords.itLiesAhead
+            : papersFiguresWords.theRecordOfBegins(site.name, day(site.firstDay)),
     };
   if (now.days === 0)
     return {
-      finding: `No day of ${period.label} brought data`,
-      sentence: `${counted(elapsed.days, 'day')} should have. Look at the site’s loggers.`,
+      finding: papersFiguresWords.noDayOfBrought(period.label),
+      sentence: papersFiguresWords.shouldHaveLookAt(elapsed.days),
     };
   const made = energy(now.energyKWh * 1000);
   const change = changeWords(f.compared, yearBeforeLabel(f));
   const parts = [
-    change === null ? '' : running(f) ? `Up to yesterday ${change}.` : `That is ${change}.`,
+    change === null
+      ? ''
+      : running(f)
+        ? papersFiguresWords.upToYesterday(change)
+        : papersFiguresWords.thatIs(change),
     now.performanceRatio === null
-      ? 'No sensor measured the light in the plane, so there is no performance ratio.'
-      : `The performance ratio is ${number(now.performanceRatio, 2)}.`,
-    now.completeness < 0.98
-      ? `${percent(now.completeness)} of the data due have come: what is missing is in none of the figures.`
-      : '',
+      ? papersFiguresWords.noSensorMeasuredThe
+      : papersFiguresWords.thePerformanceRatioIs(now.performanceRatio),
+    now.completeness < 0.98 ? papersFiguresWords.ofTheDataDue(now.completeness) : '',
   ];
   return {
     finding: elapsed.running
-      ? `${site.name} has made ${made} so far in ${period.label}`
-      : `${site.name} made ${made} in ${period.label}`,
+      ? papersFiguresWords.hasMadeSoFar(site.name, made, period.label)
+      : papersFiguresWords.madeIn(site.name, made, period.label),
     sentence: parts.filter(Boolean).join(' '),
   };
 }
@@ -86,63 +86,64 @@ const hoursWords = (minutes: number): string =>
 export function siteCards(f: SiteFigures): FigureCard[] {
   const { now, currency, worth } = f;
   if (!now) return [];
-  const light = `light measured in ${percent(now.completenessLight)} of the time`;
+  const light = papersFiguresWords.lightMeasuredInOf(now.completenessLight);
   return [
     {
-      label: 'Energy, AC',
+      label: papersFiguresWords.energyAC,
       figure: energy(now.energyKWh * 1000),
-      note: changeWords(f.compared, yearBeforeLabel(f)) ?? 'no year before to compare',
+      note: changeWords(f.compared, yearBeforeLabel(f)) ?? papersFiguresWords.noYearBeforeTo,
     },
     {
-      label: 'Specific yield',
+      label: papersFiguresWords.specificYield,
       figure: quantity(now.specificYieldKWhKWp, 'kWh/kWp', 1),
       note:
         now.insolationKWhM2 === null
-          ? 'no light measured in the plane'
-          : `${quantity(now.insolationKWhM2, 'kWh/m²', 1)} fell into the plane`,
+          ? papersFiguresWords.noLightMeasuredIn
+          : papersFiguresWords.fellIntoThePlane(now.insolationKWhM2),
     },
     {
-      label: 'Performance ratio',
+      label: papersFiguresWords.performanceRatio,
       figure: number(now.performanceRatio, 3),
       note:
         now.performanceRatio === null
-          ? 'needs a sensor in the plane'
-          : `at 25 °C ${number(now.performanceRatioStc, 3)}${
-              now.performanceRatioAnnual === null
-                ? ''
-                : `, at the year’s temperature ${number(now.performanceRatioAnnual, 3)}`
-            }; ${light}`,
+          ? papersFiguresWords.needsASensorIn
+          : papersFiguresWords.at25CPerformanceRatioStc(
+              now.performanceRatioStc,
+              now.performanceRatioAnnual,
+              light,
+            ),
     },
     {
-      label: 'Availability',
+      label: papersFiguresWords.availability,
       figure: share(now.availability, 2),
       note:
         now.availability === null
-          ? 'needs a sensor in the plane'
+          ? papersFiguresWords.needsASensorIn
           : now.lostMinutes === 0
-            ? 'no minute of light was lost'
-            : `${hoursWords(now.lostMinutes)} of light lost${
-                now.lostMinutesGrid > 0
-                  ? `, ${hoursWords(now.lostMinutesGrid)} of them without grid: ${share(now.availabilityOwn, 2)} without those`
-                  : ''
-              }`,
+            ? papersFiguresWords.noMinuteOfLight
+            : papersFiguresWords.lostMinutesOfLightLost(
+                hoursWords(now.lostMinutes),
+                now.lostMinutesGrid,
+                hoursWords(now.lostMinutesGrid),
+                share(now.availabilityOwn, 2),
+              ),
     },
     {
-      label: 'Data',
+      label: papersFiguresWords.data,
       figure: share(now.completeness),
-      note: `of the reports due in daylight; ${counted(now.days, 'day')} of ${number(f.elapsed?.days ?? 0)}`,
+      note: papersFiguresWords.ofTheReportsDue(now.days, f.elapsed?.days),
     },
     currency === null
-      ? { label: 'Worth', figure: UNKNOWN, note: 'no currency is set for your organisation' }
+      ? { label: papersFiguresWords.worth, figure: UNKNOWN, note: papersFiguresWords.noCurrencyIsSet }
       : {
-          label: 'Worth',
+          label: papersFiguresWords.worth,
           figure: money(worth?.money ?? null, currency),
           note:
             worth === null
-              ? 'no price a kWh is set'
+              ? papersFiguresWords.noPriceAKWh
               : worth.unpricedKWh > 0
-                ? `${energy(worth.unpricedKWh * 1000)} of it without a price`
-                : 'at the price of each day',
+                ? papersFiguresWords.ofItWithoutPrice(worth.unpricedKWh)
+                : papersFiguresWords.atThePriceOf,
         },
   ];
 }
@@ -182,17 +183,25 @@ export function calendarDays(f: SiteFigures): CalendarDay[] {
     const key = new Date(at).toISOString().slice(0, 10);
     const d = known.get(key);
     if (!d) {
-      out.push({ day: key, share: null, text: '', words: `${day(key)}: no record`, marked: true });
+      out.push({
+        day: key,
+        share: null,
+        text: '',
+        words: papersFiguresWords.noRecord(day(key)),
+        marked: true,
+      });
       continue;
     }
     const odd = [
-      d.completeness < f.incompleteBelow && key !== f.today ? `${percent(d.completeness)} of the data` : '',
-      d.lostMinutes > 0 ? `${hoursWords(d.lostMinutes)} of light lost` : '',
+      d.completeness < f.incompleteBelow && key !== f.today
+        ? papersFiguresWords.ofTheData(d.completeness)
+        : '',
+      d.lostMinutes > 0 ? papersFiguresWords.ofLightLost(hoursWords(d.lostMinutes)) : '',
     ].filter(Boolean);
     const words = [
       energy(d.energyKWh * 1000),
       d.specificYieldKWhKWp === null ? '' : quantity(d.specificYieldKWhKWp, 'kWh/kWp', 2),
-      d.performanceRatio === null ? '' : `performance ratio ${number(d.performanceRatio, 2)}`,
+      d.performanceRatio === null ? '' : papersFiguresWords.performanceRatio2(d.performanceRatio),
       ...odd,
     ].filter(Boolean);
     out.push({
@@ -215,12 +224,12 @@ export function calendarWords(days: readonly CalendarDay[]): string {
   );
   const marked = days.filter((d) => d.marked).map((d) => Number(d.day.slice(8)));
   return [
-    best ? `Best: ${best.words}.` : '',
+    best ? papersFiguresWords.bestBest(best.words) : '',
     marked.length === 0
       ? ''
       : marked.length > 8
-        ? `${marked.length} days are marked.`
-        : `Marked: ${listed(marked)}.`,
+        ? papersFiguresWords.daysAreMarked(marked.length)
+        : papersFiguresWords.markedMarked(listed(marked)),
   ]
     .filter(Boolean)
     .join(' ');
@@ -229,12 +238,13 @@ export function calendarWords(days: readonly CalendarDay[]): string {
 export function fleetFinding(f: FleetFigures): { finding: string; sentence: string } {
   if (f.rows.length === 0 || !f.total)
     return {
-      finding: `Nothing is on record for ${f.period.label}`,
-      sentence: f.period.from > f.today ? 'It lies ahead.' : 'No operating site has a day in it.',
+      finding: papersFiguresWords.nothingIsOnRecord(f.period.label),
+      sentence:
+        f.period.from > f.today ? papersFiguresWords.itLiesAhead : papersFiguresWords.noOperatingSiteHas,
     };
   const year = Number(f.period.key.slice(0, 4)) - 1;
   const than = running(f)
-    ? 'the same whole days a year before'
+    ? papersFiguresWords.theSameWholeDaysA
     : f.period.kind === 'year'
       ? String(year)
       : `${f.period.label.split(' ')[0] ?? ''} ${year}`;
@@ -242,15 +252,15 @@ export function fleetFinding(f: FleetFigures): { finding: string; sentence: stri
   const made = energy(f.total.energyKWh * 1000);
   const low = f.rows.filter((r) => r.now.completeness < 0.9).map((r) => r.site.name);
   return {
-    finding: `${counted(f.rows.length, 'site')} ${f.rows.length === 1 ? 'has' : 'have'} made ${made} in ${f.period.label}${running(f) ? ' so far' : ''}`,
+    finding: papersFiguresWords.madeIn2(f.rows.length, made, f.period.label, running(f)),
     sentence: [
-      change === null ? '' : running(f) ? `Up to yesterday ${change}.` : `That is ${change}.`,
-      low.length > 0
-        ? `Under 90 % of the data came from ${low.length > 3 ? counted(low.length, 'site') : listed(low)}: their figures are low by what is missing.`
-        : '',
-      f.without.length > 0
-        ? `No data at all from ${f.without.length > 3 ? counted(f.without.length, 'site') : listed(f.without)}.`
-        : '',
+      change === null
+        ? ''
+        : running(f)
+          ? papersFiguresWords.upToYesterday(change)
+          : papersFiguresWords.thatIs(change),
+      low.length > 0 ? papersFiguresWords.underOfTheData(low.length, listed(low)) : '',
+      f.without.length > 0 ? papersFiguresWords.noDataAtAll(f.without.length, listed(f.without)) : '',
     ]
       .filter(Boolean)
       .join(' '),
