@@ -1,6 +1,12 @@
 import type { LoopSample } from './resistance';
 import { median } from './robust';
 
+/** Connectors and leads from module to module, ohm each: common practice. */
+const LEAD_OHM = 0.002;
+
+/** What the conductors of a string's loop have by themselves, ohm: home run, leads and connectors. */
+export const conductorsOhm = (cableOhm: number, slots: number): number => cableOhm + LEAD_OHM * (slots + 1);
+
 /** A report of a string with what its input measured at that moment: V and A by position, null: not reported. */
 export interface LoopReading {
   atS: number;

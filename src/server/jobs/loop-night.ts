@@ -1,4 +1,5 @@
 import type { FoundCause } from '../../domain/causes/changes';
+import { conductorsOhm, loopSamples } from '../../domain/output/loop-samples';
 import { median } from '../../domain/output/robust';
 import {
   fitLoop,
@@ -11,7 +12,7 @@ import {
 import type { PlaneReference } from '../../domain/output/plane-reference';
 import { asIngest } from '../db/transaction';
 import { pastFits, type LoopFitRow } from '../queries/loop-fits';
-import { loopRows, type LoopRow, type OutputString } from '../queries/output-series';
+import { loopReading, loopRows, type LoopRow, type OutputString } from '../queries/output-series';
 import { loopCause } from './night-findings';
 import type { NightSeries, NightString, SeriesSite } from './plane-series';
 
@@ -21,8 +22,6 @@ import type { NightSeries, NightString, SeriesSite } from './plane-series';
 const SUNNY_H = 2.2;
 const SUNNY_DAYS = 3;
 const STRINGS_A_READ = 40;
-/** Connectors and leads from module to module, ohm each: common practice. */
-const LEAD_OHM = 0.002;
 
 export interface LoopJudged {
   stringRef: string;
@@ -72,7 +71,7 @@ export async function fitLoops(
         const before = pasts.get(id);
         return before ? [f.ohm - before.ohm] : [];
       }),
-      cableOhm: string.cableOhm + LEAD_OHM * (string.slots + 1),
+      cableOhm: conductorsOhm(string.cableOhm, string.slots),
     };
     const finding = judgeLoop(fit, against, excessOhm);
     const found = finding.outcome === 'excess' || finding.outcome === 'growing';
@@ -139,36 +138,17 @@ async function readSamples(
   return samples;
 }
 
-const BIN_S = 300;
-const binOf = (atS: number): number => Math.floor(atS / BIN_S);
-
+/** A string's samples outside the quarters that an inverter limited; what flowed beside is told by all reports. */
 function samplesOf(
   n: NightString,
   rows: readonly LoopRow[],
   others: readonly (readonly LoopRow[])[],
   series: NightSeries,
 ): LoopSample[] {
-  const typical = (row: LoopRow): number => {
-    const known = row.current.flatMap((mA) => (mA === null ? [] : [mA / 1000]));
-    return known.length >= row.current.length / 2 && known.length > 0 ? median(known) : NaN;
-  };
-  const beside = others.map((list) => new Map(list.map((r) => [binOf(r.atS), typical(r)])));
-  return rows.flatMap((row): LoopSample[] => {
-    const q = Math.floor((row.atS - (series.boundsS[0] ?? 0)) / 900);
-    if (n.excluded[q] !== 0 || row.voltage.length !== n.string.slots) return [];
-    const sumV = row.voltage.reduce<number>((sum, cV) => sum + (cV === null ? NaN : cV / 100), 0);
-    const othersA = beside.reduce((sum, of) => sum + (of.get(binOf(row.atS)) ?? NaN), 0);
-    const ownA = typical(row);
-    if (row.inputVoltage === null || Number.isNaN(sumV + ownA + othersA)) return [];
-    return [
-      {
-        atS: row.atS,
-        sumV,
-        inputV: row.inputVoltage / 10,
-        ownA,
-        othersA,
-        ...(row.inputCurrent !== null && { inputA: row.inputCurrent / 100 }),
-      },
-    ];
-  });
+  const quarterOf = (atS: number): number => Math.floor((atS - (series.boundsS[0] ?? 0)) / 900);
+  return loopSamples(
+    rows.filter((row) => n.excluded[quarterOf(row.atS)] === 0).map(loopReading),
+    others.map((list) => list.map(loopReading)),
+    n.string.slots,
+  );
 }

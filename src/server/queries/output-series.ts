@@ -1,3 +1,4 @@
+import type { LoopReading } from '../../domain/output/loop-samples';
 import type { UnitType } from '../../domain/equipment/unit-type';
 import type { Tx } from '../db/transaction';
 import { anyString, framesOf, SPAN } from './frames';
@@ -231,6 +232,15 @@ export interface LoopRow {
   inputVoltage: number | null;
   inputCurrent: number | null;
 }
+
+/** A row in V and A. */
+export const loopReading = (r: LoopRow): LoopReading => ({
+  atS: r.atS,
+  voltage: r.voltage.map((cV) => (cV === null ? null : cV / 100)),
+  current: r.current.map((mA) => (mA === null ? null : mA / 1000)),
+  inputV: r.inputVoltage === null ? null : r.inputVoltage / 10,
+  inputA: r.inputCurrent === null ? null : r.inputCurrent / 100,
+});
 
 /** Reports of strings five minutes apart with the input's report of that moment, oldest first. */
 export async function loopRows(

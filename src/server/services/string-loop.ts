@@ -1,4 +1,4 @@
-import { aboutTheLine, loopSamples, type LoopReading } from '../../domain/output/loop-samples';
+import { aboutTheLine, conductorsOhm, loopSamples } from '../../domain/output/loop-samples';
 import {
   fitLoop,
   judgeLoop,
@@ -10,7 +10,7 @@ import { localDay } from '../../drawings/times';
 import type { StringLoop } from '../../schemas/api/workbench';
 import type { Tx } from '../db/transaction';
 import { pastFits } from '../queries/loop-fits';
-import { loopRows, type LoopRow } from '../queries/output-series';
+import { loopReading, loopRows } from '../queries/output-series';
 import { siblingsOf, stringFacts, stringsOnInput, type StringFacts } from '../queries/string-facts';
 import { newestLoopFits } from '../queries/string-units';
 import { dayBounds } from '../queries/string-history';
@@ -19,17 +19,6 @@ import { noSuchString } from './string-axis';
 /** Days that a fit rests on. */
 const DAYS = 3;
 const POINTS_MOST = 700;
-/** Connectors and leads from module to module, ohm each: common practice. */
-const LEAD_OHM = 0.002;
-
-const readingOf = (r: LoopRow): LoopReading => ({
-  atS: r.atS,
-  voltage: r.voltage.map((cV) => (cV === null ? null : cV / 100)),
-  current: r.current.map((mA) => (mA === null ? null : mA / 1000)),
-  inputV: r.inputVoltage === null ? null : r.inputVoltage / 10,
-  inputA: r.inputCurrent === null ? null : r.inputCurrent / 100,
-});
-
 export interface LoopRead {
   samples: LoopSample[];
   fit: LoopFit | string;
@@ -52,7 +41,7 @@ export async function loopOf(
   const onInput = await stringsOnInput(tx, facts.inputId);
   const told = facts.measures === 'output' || facts.measures === 'both';
   const rows = told ? await loopRows(tx, onInput, span, facts.reportIntervalS / 2) : [];
-  const of = (id: number) => rows.filter((r) => r.stringId === id).map(readingOf);
+  const of = (id: number) => rows.filter((r) => r.stringId === id).map(loopReading);
   const samples = loopSamples(of(facts.id), onInput.filter((id) => id !== facts.id).map(of), facts.slots);
   const fit = told ? fitLoop(samples) : 'the units of this string do not measure their output';
   const siblings = await siblingsOf(tx, facts);
@@ -64,7 +53,7 @@ export async function loopOf(
       siblings.map((s) => s.id),
       day,
     ),
-    cableOhm: facts.cableOhm + LEAD_OHM * (facts.slots + 1),
+    cableOhm: conductorsOhm(facts.cableOhm, facts.slots),
   });
   return { samples, fit, finding, fromDay, day, strings: onInput.length };
 }
