@@ -36,6 +36,12 @@ describe('a case of stuck units, looked at again', () => {
     expect(outcome({ now: sampleFigures([other]), parts: [] })).toBe('not_held');
   });
 
+  it('of silence is about being heard: a unit that is stuck meanwhile is another cause’s', () => {
+    expect(outcome({ kind: 'silent', now: sampleFigures([stuck]) })).toBe('held');
+    const silent = withSlot(sampleString(), 5, { state: 'silent' });
+    expect(outcome({ kind: 'silent', now: sampleFigures([silent]) })).toBe('not_held');
+  });
+
   it('did not hold where the voltage has not returned, though all units claim to pass', () => {
     expect(outcome({ now: sampleFigures([sampleString({ voltage: 201 })]) })).toBe('not_held');
     // within the band, or less than a part of one unit

@@ -99,6 +99,7 @@ const VERDICT_WORDS: Record<string, string> = {
 /** Verdicts that only a commanded shutdown brings out. */
 const OF_SHUTDOWN = new Set(['not_shutting_down', 'unconfirmed', 'late']);
 const any = (): boolean => true;
+const silence = (verdict: string): boolean => verdict === 'silent';
 const ofShutdown = (verdict: string): boolean => OF_SHUTDOWN.has(verdict);
 
 /** Units that are not right now, in words, by string and what they do. */
@@ -194,12 +195,14 @@ function notNow(look: LookAgain): string | null {
 function byUnits(look: LookAgain): LookedAgain {
   const waiting = notNow(look);
   if (waiting) return answer('wait', waiting);
-  const missing = voltageMissing(look);
-  const wrong = [...wrongNow(look, any), ...missing];
+  // a case of silence is about being heard: what else is wrong with a unit has a cause of its own
+  const counts = look.kind === 'silent' ? silence : any;
+  const missing = look.kind === 'silent' ? [] : voltageMissing(look);
+  const wrong = [...wrongNow(look, counts), ...missing];
   if (look.cause?.open && wrong.length === 0) wrong.push('the cause that it was opened from still holds');
   if (wrong.length > 0)
     return answer('not_held', `${sentence(wrong)}.`, missing.length > 0 ? [] : voltageNow(look));
-  const came = relapsed(look, any);
+  const came = relapsed(look, counts);
   if (came.length > 0) return answer('not_held', `${sentence(came)}.`, voltageNow(look));
   if (look.lightMs < AFTER_CLOSING.lightMs)
     return answer('wait', 'All is well so far; three hours of daylight are waited for.');

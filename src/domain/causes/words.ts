@@ -150,6 +150,11 @@ function aliveInputs(items: readonly Item[], site: SiteCondition): string | null
   );
   if (known.length === 0) return null;
   const alive = known.filter((i) => (i.currentA ?? 0) > 0.2).length;
+  const feeds = items.length === 1 && items[0]?.slot !== null ? 'it feeds' : 'they feed';
+  if (known.length === 1)
+    return alive > 0
+      ? `Current flows on the input that ${feeds}: it is the reports that are missing, not the power.`
+      : `No current flows on the input that ${feeds}.`;
   return alive > 0
     ? `Current flows on ${alive} of ${count(known.length, 'input', 'inputs')} that they feed: it is the reports that are missing, not the power.`
     : `No current flows on the ${count(known.length, 'input', 'inputs')} that they feed.`;

@@ -1,4 +1,5 @@
 import type { FoundCause, FoundUnit } from '../../domain/causes/changes';
+import { DECISIVE_METHOD } from '../../domain/output/membership';
 import type { OutputFinding } from '../../domain/output/low-output';
 import type { LoopFinding } from '../../domain/output/resistance';
 import type { WeakUnit } from '../../domain/output/weak-unit';
@@ -150,7 +151,8 @@ export function wrongStringCauses(
         headline: other
           ? `Unit ${s.position} of ${s.string} and unit ${other.position} of ${other.string} stand in each other's string`
           : `Unit ${s.position} of ${s.string} carries the current of ${s.otherString ?? 'another string'}`,
-        evidence: both.map((m) => m.words).join(' '),
+        // how it is decided is said once, at the end
+        evidence: [...both.map((m) => m.words.replace(` ${DECISIVE_METHOD}`, '')), DECISIVE_METHOD].join(' '),
         figures: {
           units: both.map(({ series: _, ...m }) => m),
         },
