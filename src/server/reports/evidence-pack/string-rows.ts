@@ -24,10 +24,7 @@ export function stringRows(
   const { before, after } = data.case;
   const rest = data.strings.filter((s) => s.drawn === null).length;
   return {
-    words:
-      rest === 0
-        ? null
-        : papersEvidenceStringRows.haveSheetWithDrawings(data.strings.length, rest),
+    words: rest === 0 ? null : papersEvidenceStringRows.haveSheetWithDrawings(data.strings.length, rest),
     columns: [
       { header: papersEvidenceStringRows.string, share: 1.4 },
       { header: papersEvidenceStringRows.units, share: 3 },
