@@ -74,7 +74,7 @@ export function MixBar({ id, counts, width = 190, height = 16, paint = SCREEN }:
       height={height}
       viewBox={`0 0 ${width} ${height}`}
       role="img"
-      aria-label={mixBar.unitsUnitsMap(
+      aria-label={mixBar.unitsByState(
         counts.units,
         parts.map((p) => `${number(p.units)} ${MIX_WORDS[p.part]}`).join(', '),
       )}

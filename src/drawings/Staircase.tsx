@@ -40,7 +40,7 @@ export function staircaseInWords(g: StaircaseGeometry, input: StaircaseInput): s
   const parts = [staircase.voltageStaircaseOfPositions(input.slots.length)];
   if (input.voltage !== null) parts.push(staircase.theStringGives(input.voltage));
   const expected = input.expectedInShutdown ?? input.expectedVoltage;
-  if (expected !== null) parts.push(staircase.expectedExpected(expected));
+  if (expected !== null) parts.push(staircase.expected(expected));
   if (g.total)
     parts.push(
       g.total.passing === null

@@ -100,10 +100,10 @@ export function TestLines({
         {limits.afterS} s
       </text>
       <text x={plot.right} y={y(limits.insideV) - 4} textAnchor="end" fill={paint.ink2} {...FONT}>
-        {testLines.insideVVInside(limits.insideV)}
+        {testLines.insideVvInside(limits.insideV)}
       </text>
       <text x={plot.right} y={y(limits.outsideV) - 4} textAnchor="end" fill={paint.ink2} {...FONT}>
-        {testLines.outsideVVOutside(limits.outsideV)}
+        {testLines.outsideVvOutside(limits.outsideV)}
       </text>
       {releaseS !== null && releaseS <= endS && (
         <>

@@ -13,8 +13,8 @@ export const credentialForms = {
   yourPasswordIsChanged: 'Your password is changed; other devices were signed out.',
   currentPassword: 'Current password',
   newPassword: 'New password',
-  atLeastCharactersThree: (passwordMin3: number) =>
-    `At least ${passwordMin3} characters. Three or four words do well.`,
+  atLeastCharactersThree: (passwordMin: number) =>
+    `At least ${passwordMin} characters. Three or four words do well.`,
   changeThePassword: 'Change the password',
   yourAddressChangesWhen: (email: string) =>
     `Your address changes when the link in it is used. Until then you sign in with ${email}.`,
@@ -26,8 +26,7 @@ export const credentialForms = {
 export const secondFactorWords = {
   secondFactor: 'Second factor',
   inForceSince: 'In force since ',
-  recoveryCodesLeftLeft: (recoveryCodesLeft: number) =>
-    `. ${counted(recoveryCodesLeft, 'recovery code')} left.`,
+  recoveryCodesLeft: (recoveryCodesLeft: number) => `. ${counted(recoveryCodesLeft, 'recovery code')} left.`,
   noneWithOneSign: 'None. With one, sign-in also asks for a code that an authenticator on your phone shows.',
   endIt: 'End it',
   setOneUp: 'Set one up',
@@ -65,7 +64,7 @@ export const tokenForm = {
   countedSitesSite: (sites: number) => counted(sites, 'site'),
   onlyTheseSites: 'Only these sites',
   holdsFor: 'Holds for',
-  daysDays: (days: number) => `${days} days`,
+  days: (days: number) => `${days} days`,
   yourPassword: 'Your password',
   makeTheToken: 'Make the token',
 };

@@ -29,7 +29,7 @@ export const historyBoard = {
   countedFieldsField: (fields: number) => counted(fields, 'field'),
   serialToNullSits: (serial: string, to: null | string, which: string, position: number) =>
     `${serial} ${to === null ? `sits in ${which}, position ${position}` : 'sits in no slot now'}`,
-  whichPositionPosition: (which: string, position: number) => `${which}, position ${position}`,
+  whichPosition: (which: string, position: number) => `${which}, position ${position}`,
   from: 'from ',
   stillThere: ', still there',
   to: ' to ',

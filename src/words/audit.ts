@@ -2,8 +2,7 @@ import { counted } from '../drawings/numbers';
 
 export const auditList = {
   fromAddress: (address: string) => `from ${address}`,
-  countedChangesSHOWNCHANGES: (changes: number, shownChanges3: number) =>
-    counted(changes - shownChanges3, 'more field'),
+  moreFields: (changes: number, shownChanges: number) => counted(changes - shownChanges, 'more field'),
   findAPersonSite: 'Find a person, site, serial or reason',
   personSiteSerialOr: 'Person, site, serial or reason',
   about: 'About',

@@ -24,7 +24,7 @@ export const checkForm = {
   note: 'Note',
   photo: 'Photo',
   notApplicable2: (offersNotApplicable: string) => `Not applicable: ${offersNotApplicable}`,
-  sourceSource: (source: string) => `Source: ${source}`,
+  source: (source: string) => `Source: ${source}`,
 };
 
 export const checkScreen = {

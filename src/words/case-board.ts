@@ -65,9 +65,9 @@ export const filters = {
 export const caseBoardList = {
   noCaseIsOpen: 'No case is open',
   openOneFromA: 'Open one from a cause, from a string, or by hand; it keeps the figures of that minute.',
-  overdueOverdueOverdue: (overdue: number) => `${overdue} ${overdue === 1 ? 'is' : 'are'} overdue`,
+  areOverdue: (overdue: number) => `${overdue} ${overdue === 1 ? 'is' : 'are'} overdue`,
   noneIsOverdue: 'none is overdue',
-  mineMineYours: (mine: number) => `${mine} ${mine === 1 ? 'is' : 'are'} yours`,
+  areYours: (mine: number) => `${mine} ${mine === 1 ? 'is' : 'are'} yours`,
   nobodyYet: (nobodys: number) => `${nobodys} ${nobodys === 1 ? 'has' : 'have'} nobody yet`,
   partsAndAt: (parts: string, at: undefined | string) => `${parts} and ${at}`,
   oneCaseIsOpen: 'One case is open',

@@ -14,8 +14,8 @@ export const caseFile = {
   forWhoeverIsCalled: 'For whoever is called next',
   whatIsWrongThe:
     'What is wrong, the as-built, readings, events, drawings, the checklist as done and photos.',
-  evidenceAsPDF: 'Evidence as PDF',
-  allAsZIP: 'All as ZIP',
+  evidenceAsPdf: 'Evidence as PDF',
+  allAsZip: 'All as ZIP',
   sendMineOverIt: 'Send mine over it',
   leaveItAsIt: 'Leave it as it is now',
 };
@@ -24,8 +24,8 @@ export const checklistSheet = {
   beforeCallingAnybody: 'Before calling anybody',
   ofLookedAt: (done: number, items: number) => `${done} of ${items} looked at`,
   stringsStayDangerousIn: 'Strings stay dangerous in light.',
-  cautionCaution: (caution: string) => `Caution: ${caution}`,
-  doneByBy: (done: boolean, by: string) => `${done ? 'Looked at' : 'Taken back'} by ${by}, `,
+  caution: (caution: string) => `Caution: ${caution}`,
+  doneBy: (done: boolean, by: string) => `${done ? 'Looked at' : 'Taken back'} by ${by}, `,
   changeTheNote: 'Change the note',
   addANote: 'Add a note',
   toCheck: (check: string) => ` to: ${check}`,

@@ -113,15 +113,15 @@ export const causesWords = {
   lookAtAllKinds: 'Look at all kinds and sites, or use fewer words.',
   nothingNeedsAttention: 'Nothing needs attention',
   noCauseIsOpen: 'No cause is open. Night, dark weather, commanded shutdown and planned works are none.',
-  openOpenOpenOpen: (open: number, open2: string) =>
+  causesAreOpen: (open: number, open2: string) =>
     `${countAtStart(open)} ${open === 1 ? 'cause is' : 'causes are'} open ${open2}`,
   togetherTheyCostAbout: (perDay: number) =>
     `Together they cost about ${energy(perDay)} a day. The gravest come first.`,
   theGravestComeFirst: 'The gravest come first.',
-  nN1N: (n: number, one: string) =>
+  doNotShutDown: (n: number, one: string) =>
     `${countAtStart(n)} ${n === 1 ? `${one} does` : `${one}s do`} not shut down`,
   countedStringsString: (strings: number) => counted(strings, 'string'),
-  stringNamePositionPosition: (stringName: string, position: null | number) =>
+  stringPosition: (stringName: string, position: null | number) =>
     `${stringName}, position ${position ?? ''}`,
   unitsOfWhere: (units: number, where: string) => `${counted(units, 'unit')} of ${where}`,
 };

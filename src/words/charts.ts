@@ -16,7 +16,7 @@ export const chartTable = {
 export const heatStrip = {
   nothingReported: 'nothing reported',
   ofTheStringsMiddle: (ratio: number) => `, ${percent(ratio)} of the string’s middle`,
-  atPositionPositionValue: (at: number, timeZone: string, position: number, value: string, share: string) =>
+  atPositionValue: (at: number, timeZone: string, position: number, value: string, share: string) =>
     `${clock(at * 1000, timeZone)}, position ${position}: ${value}${share}`,
   orLess: (ratioSpan: number) => `−${percent(ratioSpan)} or less`,
   asTheMiddle: 'as the middle',

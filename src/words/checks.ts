@@ -11,7 +11,7 @@ export const checksBoard = {
   theChecksCouldNot: 'The checks could not be read again',
   strings: 'Strings',
   whichStrings: 'Which strings',
-  checksAsCSV: 'Checks as CSV',
+  checksAsCsv: 'Checks as CSV',
   findAStringA: 'Find a string, a note or a person',
   chooseAllThatAre: 'Choose all that are ready',
   signChosenStrings: 'Sign chosen strings',
@@ -78,7 +78,7 @@ export const readingDetail = {
   readingsToEarthTogether: (earth: string) => `Readings to earth together: ${earth}`,
   charAtLightMeterModeCommanded: (charAt: string, light: string, meterMode: string, commanded: string) =>
     `${charAt.toUpperCase() + light} light${meterMode === 'low_impedance' ? ', low-impedance input' : ''}${commanded === 'unknown' ? '' : `, ${commanded}`}.`,
-  expectedExpected: (expected: string) => `Expected: ${expected}. `,
+  expected: (expected: string) => `Expected: ${expected}. `,
   thatReadsTo: (expectedLowV: number, expectedHighV: number) =>
     `That reads ${volts(expectedLowV)} to ${volts(expectedHighV)}. `,
   comparedWith: (siblings: string) => `Compared with ${siblings}. `,
@@ -152,7 +152,7 @@ export const checksWords = {
   drawOrImportThe: 'Draw or import the strings and their slots first.',
   checkThatDidNot: (amiss: string, amiss2: number) =>
     `${amiss} ${amiss2 === 1 ? 'has' : 'have'} a check that did not pass.`,
-  readyReadyReadyTo: (ready: number, ready2: string, stale: number, stale2: string) =>
+  readyToSignWords: (ready: number, ready2: string, stale: number, stale2: string) =>
     `${countAtStart(ready)} ${ready === 1 ? 'is' : 'are'} ready to sign: ${ready2}${stale > 0 ? ` (${stale2} again: something was recorded since)` : ''}.`,
   nothingIsLeftTo: 'Nothing is left to check.',
   recordTheChecksOn:

@@ -159,7 +159,7 @@ export const stringsSheet = {
   whichStrings: 'Which strings',
   allStrings: (strings: number) => `All ${strings}`,
   stillMissingUnits: (filter: number) => `Still missing units, ${filter}`,
-  unitsAsCSV: 'Units as CSV',
+  unitsAsCsv: 'Units as CSV',
   rollCallByString: 'Roll call by string',
   noStringIsMissing: 'No string is missing a unit',
   unitsOfShutdownOnly: (mute: number) =>
@@ -200,8 +200,8 @@ export const underWay = {
   everyStepBeforeIt: 'Every step before it is done, or its gaps are accepted by name.',
   ofDone: (done: number, steps: number) =>
     `${countAtStart(done)} of ${counted(steps, 'step')} ${done === 1 ? 'is' : 'are'} done`,
-  theHandover: (gaps: number, site: boolean, liveUntilMeasured4: string) =>
-    `${counted(gaps, 'point blocks', 'points block')} the handover. ${site ? liveUntilMeasured4 : 'Until the roll call is complete, treat every string as live.'}`,
+  theHandover: (gaps: number, site: boolean, liveUntilMeasured: string) =>
+    `${counted(gaps, 'point blocks', 'points block')} the handover. ${site ? liveUntilMeasured : 'Until the roll call is complete, treat every string as live.'}`,
 };
 
 export const commissioningWords = {
@@ -223,7 +223,7 @@ export const commissioningWords = {
   noFurtherAnswersAre: 'No further answers are expected soon.',
   notAnsweredWalkTo: (missing: number, missing2: string) =>
     `${counted(missing, 'unit')} ${missing2} not answered: walk to ${missing === 1 ? 'it' : 'them'}, and compare the label.`,
-  byBy: (by: string, timeZone: string) => ` by ${clock(by, timeZone)}`,
+  by: (by: string, timeZone: string) => ` by ${clock(by, timeZone)}`,
   theOneMissingIs: 'The one missing is expected',
   allMissingAreExpected: (missing: number) => `All ${number(missing)} missing are expected`,
   ofTheMissingExpected: (expected: number, missing: number) =>

@@ -40,14 +40,14 @@ export const roofList = {
 
 export const roofPage = {
   papers: 'Papers',
-  monthPDF: (month: string) => `${month}, PDF`,
+  monthPdf: (month: string) => `${month}, PDF`,
   whatYourRoofMade: 'What your roof made, month by month:',
   earlierMonths: 'Earlier months',
   howYourSystemIs: (newest: string) =>
     `How your system is built, what was measured, and how to look after it, as of ${newest}. Keep a copy where the people who work on the roof will find it.`,
-  handoverPapersPDF: 'Handover papers, PDF',
+  handoverPapersPdf: 'Handover papers, PDF',
   earlierVersions: 'Earlier versions',
-  versionVersionPaper: (version: number, paper: string) => `Version ${version}, ${paper}`,
+  versionOfPaper: (version: number, paper: string) => `Version ${version}, ${paper}`,
   asOfAtReaderZone: (at: string, timeZone: string, readerZone: null | string, at2: boolean) =>
     `As of ${clock(at, timeZone)}${readerZone && at2 ? ` ${zoneName(at, timeZone)}, the time at the roof` : ''}.`,
   itCouldNotBe: ' It could not be read again since; the next try follows by itself.',
@@ -67,8 +67,8 @@ export const todaySheet = {
   todayAsATable: 'Today as a table',
   meanPowerOfEach: 'Mean power of each quarter of an hour',
   from: 'From',
-  madeKW: 'Made (kW)',
-  clearDayKW: 'Clear day (kW)',
+  madeKw: 'Made (kW)',
+  clearDayKw: 'Clear day (kW)',
 };
 
 export const customerCards = {
@@ -82,7 +82,7 @@ export const customerCards = {
   notSwitchedOnYet: 'not switched on yet',
   countedFrom: (from: string, countedFrom: string) => `${from}; counted from ${countedFrom}`,
   thisYear: 'This year',
-  sinceSince: (since: string) => `since ${since}`,
+  since: (since: string) => `since ${since}`,
   sinceTheFirstOf: 'since the first of January',
   thisMonth: (month: number, currency: string) => `${money(month, currency)} this month`,
   thisYear2: (year: number, currency: string) => `${money(year, currency)} this year`,
@@ -90,10 +90,10 @@ export const customerCards = {
   worthSinceSwitchOn: 'Worth since switch-on',
   workingTimeSinceThen: 'Working time since then',
   noFullDayYet: 'no full day yet',
-  readingsOfOfThe: (completeness: number) =>
+  readingsAreMissing: (completeness: number) =>
     `; readings of ${percent(1 - completeness, 1)} of the time are missing`,
   noHourOfDaylight: 'no hour of daylight lost',
-  lostLostGrid0: (lost: string, grid: number, lost2: number, grid2: string) =>
+  lostOfItGrid: (lost: string, grid: number, lost2: number, grid2: string) =>
     `${lost} lost${grid > 0 ? `, ${grid >= lost2 ? 'all' : grid2} of it grid outage` : ''}`,
   below30VWithin: ' below 30 V within 30 seconds',
   below30VWithin10: ' below 30 V within 10 seconds',

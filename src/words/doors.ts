@@ -1,7 +1,7 @@
 export const signInPage = {
   theServerIsOut: 'The server is out of reach. Check the connection, then try again.',
   signIn: 'Sign in',
-  wakelineWatchesPVSites:
+  wakelineWatchesPvSites:
     'Wakeline watches PV sites with electronics on every module. It never switches them.',
   eMail: 'E-mail',
   password: 'Password',
@@ -36,7 +36,7 @@ export const newPasswordTokenPage = {
 export const invitationTokenPage = {
   yourInvitation: 'Your invitation',
   welcomeToWakeline: 'Welcome to Wakeline',
-  ofInvitesYouYou: (invitedBy: string, organisation: string, email: string) =>
+  invitesYou: (invitedBy: string, organisation: string, email: string) =>
     `${invitedBy} of ${organisation} invites you. You sign in with ${email}.`,
   yourName: 'Your name',
   password: 'Password',

@@ -7,7 +7,7 @@ export const comb = {
 export const staircase = {
   voltageStaircaseOfPositions: (slots: number) => `Voltage staircase of ${slots} positions.`,
   theStringGives: (voltage: number) => `The string gives ${volts(voltage)}.`,
-  expectedExpected: (expected: number) => `Expected: ${volts(expected)}.`,
+  expected: (expected: number) => `Expected: ${volts(expected)}.`,
   itsUnitsTellNothing: 'Its units tell nothing themselves.',
   thatIsWhatOf: (passing: number, n: number) =>
     `That is what ${passing} of ${n} passing units give; positions unknown.`,
@@ -43,7 +43,7 @@ export const drawingsStringsMix = {
 };
 
 export const mixBar = {
-  unitsUnitsMap: (units: number, map: string) => `${number(units)} units: ${map || 'none'}`,
+  unitsByState: (units: number, map: string) => `${number(units)} units: ${map || 'none'}`,
 };
 
 export const walk = {

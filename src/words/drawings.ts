@@ -27,8 +27,8 @@ export const rollCallCurve = {
 
 export const testLines = {
   command: 'command',
-  insideVVInside: (insideV: number) => `${insideV} V inside`,
-  outsideVVOutside: (outsideV: number) => `${outsideV} V outside`,
+  insideVvInside: (insideV: number) => `${insideV} V inside`,
+  outsideVvOutside: (outsideV: number) => `${outsideV} V outside`,
   released: 'released',
 };
 

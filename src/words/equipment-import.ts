@@ -18,8 +18,8 @@ export const importPage = {
   newToChange: (n: number, changed: number) => `${countAtStart(n)} new, ${changed} to change`,
   alreadyThereAndThe: (unchanged: number) =>
     `${counted(unchanged, 'row')} already there and the same. Look through what would change, then import.`,
-  hasKBImportAt: (chosen: string, ceil: number, mostBytes3: number) =>
-    `${chosen} has ${ceil} kB. Import at most ${mostBytes3 / 1000} kB at once: a catalogue is a short list.`,
+  hasKbImportAt: (chosen: string, ceil: number, mostBytes: number) =>
+    `${chosen} has ${ceil} kB. Import at most ${mostBytes / 1000} kB at once: a catalogue is a short list.`,
   isNoTextSave: (chosen: string) =>
     `${chosen} is no text. Save the spreadsheet as CSV, or copy its cells and paste them here.`,
   equipment: 'Equipment',

@@ -9,8 +9,8 @@ export const curveSheet = {
   doesNotFit: 'Does not fit',
   theCurveOfThis: 'The curve of this sheet',
   theCurveAppearsWhen: 'The curve appears when its figures are there',
-  ofToGoThe: (reading: number, curveKeys3: number) =>
-    `${reading} of ${curveKeys3} to go: the four points, the three coefficients, cells, bypass groups and the operating temperature.`,
+  ofToGoThe: (reading: number, curveKeys: number) =>
+    `${reading} of ${curveKeys} to go: the four points, the three coefficients, cells, bypass groups and the operating temperature.`,
   thePointsCantBe: 'The points can’t be of one module: see the marked field.',
   conditions: 'Conditions',
   currentOverVoltageRings: (sweep: string) =>
@@ -24,7 +24,7 @@ export const curveSheet = {
   how: 'How',
   singleDiodeModelDe: (ideality: number, resistanceSeries: number, resistanceShuntRef: number) =>
     `Single-diode model (De Soto 2006) from the sheet alone: ideality ${number(ideality, 2)}, series resistance ${number(resistanceSeries, 2)} Ω, shunt ${number(resistanceShuntRef)} Ω. Rings: the sheet’s points.`,
-  atSTC: (pmp: number) => `; ${power(pmp)} at STC`,
+  atStc: (pmp: number) => `; ${power(pmp)} at STC`,
 };
 
 export const equipmentListWords = {
@@ -32,8 +32,7 @@ export const equipmentListWords = {
   archived: 'Archived',
   all: 'All',
   familiesOfEquipment: 'Families of equipment',
-  enterFamilyFamily: (family: string, family2: string) =>
-    `Enter ${family === 'inverters' ? 'an' : 'a'} ${family2}`,
+  enterFamily: (family: string, family2: string) => `Enter ${family === 'inverters' ? 'an' : 'a'} ${family2}`,
   importAFile: 'Import a file',
   rowsOfItems: (rows: number, items: number) => `${number(rows)} of ${number(items)}`,
   filterByName: (family: string) => `Filter ${family.toLowerCase()} by name`,
@@ -66,7 +65,7 @@ export const pairForm = {
   note: 'Note',
   conditionsThatItNames: 'Conditions that it names: cable, tool, temperature.',
   theDocumentItself: 'The document itself',
-  aPDFOrA: 'A PDF or a picture, at most 25 MB. Without it the record says only where to find it.',
+  aPdfOr: 'A PDF or a picture, at most 25 MB. Without it the record says only where to find it.',
   thePairIsRecorded: 'The pair is recorded, its document is not here yet',
   notRecorded: 'Not recorded',
   sendingTheDocument: (round: number) => `Sending the document: ${round} %`,
@@ -113,7 +112,7 @@ export const typePage = {
   chooseAKindIt:
     'Choose a kind: it fills the form with what is usual. Then change what the maker’s sheet says otherwise.',
   typeMakerAndType: 'Type maker and type as they are embossed on the connector.',
-  typeTheDCSide:
+  typeTheDcSide:
     'Type the DC side of the sheet: limits of one input, and the window in which it finds the maximum power.',
   notUsedYet: 'Not used yet',
   usedBy: (item: string) => `Used by ${item}`,

@@ -41,8 +41,8 @@ export const importedSheet = {
   day: 'Day',
   energy: 'Energy',
   where: 'Where',
-  invertersAC: 'inverters, AC',
-  stringsDC: 'strings, DC',
+  invertersAc: 'inverters, AC',
+  stringsDc: 'strings, DC',
 };
 
 export const periodPicker = {
@@ -56,12 +56,12 @@ export const periodPicker = {
 export const pricesSheet = {
   notSent: 'Not sent',
   itDidNotWork: 'It did not work. Try again.',
-  priceOfAKWh: 'Price of a kWh',
+  priceOfAkWh: 'Price of a kWh',
   noCurrencySet: 'no currency set',
   aManagerSetsThe:
     'A manager sets the currency in the settings; prices are kept until then and shown afterwards.',
   noneIsSetSo: 'None is set, so energy is not priced.',
-  fromFrom: (from: string) => `From ${from}: `,
+  fromWords: (from: string) => `From ${from}: `,
   setBy: (currency: null | string, by: string) => ` ${currency ?? ''}, set by ${by}`,
   takeAway: 'Take away',
   takeAwayThePrice: (from: string) => `Take away the price from ${from}`,

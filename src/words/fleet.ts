@@ -24,7 +24,7 @@ export const fleetTable = {
   commissioning: 'Commissioning',
   operating: 'Operating',
   site: 'Site',
-  stageUnitsUnits: (stage: string, units: number) => `${stage}, ${number(units)} units`,
+  stageUnits: (stage: string, units: number) => `${stage}, ${number(units)} units`,
   stage: 'Stage',
   units: 'Units',
   open: 'Open',
@@ -39,8 +39,6 @@ export const fleetTable = {
 export const sinceLastLook = {
   sinceYouLastLooked: 'Since you last looked, ',
   seen: 'Seen',
-  pathMaxAgeSamesite: (seenCookie3: string, since: string) =>
-    `${seenCookie3}=${since}; path=/; max-age=2592000; samesite=lax`,
   itemAt: (item: string) => `${item} at `,
   andMoreEachSite: (more: number) => `and ${more} more; each site tells its own.`,
 };
@@ -49,21 +47,21 @@ export const fleetColumnsWords = {
   timeZone: 'time zone',
   inShutdown: 'in shutdown',
   notShuttingDown: 'not shutting down',
-  inShutdownSinceUTC: 'in shutdown since (UTC)',
+  inShutdownSinceUtc: 'in shutdown since (UTC)',
   performanceRatio30D: 'performance ratio 30 d (%)',
   powerW: 'power (W)',
   acCapacityW: 'AC capacity (W)',
-  newestReportUTC: 'newest report (UTC)',
+  newestReportUtc: 'newest report (UTC)',
 };
 
 export const fleetFindingWords = {
   allUnitsPass: (all: number) => `all ${number(all)} units pass`,
   ofUnitsPass: (passing: number, all: number) => `${number(passing)} of ${number(all)} units pass`,
-  stuckStuckStuckIn: (stuck: number, stuckAt: number, stuckAt2: undefined | string, stuckAt3: string) =>
+  stuckInShutdownAt: (stuck: number, stuckAt: number, stuckAt2: undefined | string, stuckAt3: string) =>
     `${number(stuck)} ${stuck === 1 ? 'is' : 'are'} stuck in shutdown at ${stuckAt === 1 ? stuckAt2 : `${stuckAt3} sites`}`,
   cantBeConfirmed: (unconfirmed: number) => `${number(unconfirmed)} can't be confirmed`,
-  silentSilentSilent: (silent: number) => `${number(silent)} ${silent === 1 ? 'is' : 'are'} silent`,
-  unheardUnheard: (unheard: number) => `${number(unheard)} unheard`,
+  areSilent: (silent: number) => `${number(silent)} ${silent === 1 ? 'is' : 'are'} silent`,
+  unheard: (unheard: number) => `${number(unheard)} unheard`,
   inTheDark: (dark: number) => `${number(dark)} in the dark`,
   nothingThemselves: (mute: number) => `${number(mute)} ${mute === 1 ? 'tells' : 'tell'} nothing themselves`,
   inShutdownOnPurpose: (listedSaid: string, held: number) =>
@@ -113,12 +111,12 @@ export const fleetNeed = {
   didNotShutDown: (notShuttingDown: number) => `${number(notShuttingDown)} did not shut down`,
   stringsLive11String: (stringsLive: number) =>
     `${stringsLive === 1 ? '1 string' : `${number(stringsLive)} strings`} did not shut down`,
-  stuckStuckCauses: (stuck: number, causes: string) => `${number(stuck)} stuck${causes}`,
+  stuckCauses: (stuck: number, causes: string) => `${number(stuck)} stuck${causes}`,
   stringsStuck11String: (stringsStuck: number) =>
     `${stringsStuck === 1 ? '1 string has' : `${number(stringsStuck)} strings have`} stuck units`,
-  unconfirmedUnconfirmed: (unconfirmed: number) => `${number(unconfirmed)} unconfirmed`,
-  silentSilentCauses: (silent: number, causes: string) => `${number(silent)} silent${causes}`,
-  unheardUnheard: (unheard: number) => `${number(unheard)} unheard`,
+  unconfirmed: (unconfirmed: number) => `${number(unconfirmed)} unconfirmed`,
+  silentCauses: (silent: number, causes: string) => `${number(silent)} silent${causes}`,
+  unheard: (unheard: number) => `${number(unheard)} unheard`,
   noReportSince: (reportedAt: string) => `no report since ${reportedAt}`,
   hasNotReportedYet: 'has not reported yet',
   inShutdownSince: (inShutdownSince: string) => `in shutdown since ${inShutdownSince}`,

@@ -7,7 +7,7 @@ export const badCellsSheet = {
   mendThemInThe: 'Mend them in the file and choose it again, or import the rest without them.',
   row: 'Row',
   column: 'Column',
-  columnColumn: (column: number) => `column ${column + 1}`,
+  columnWords: (column: number) => `column ${column + 1}`,
   cell: 'Cell',
   empty: 'empty',
   whyAndWhatWould: 'Why, and what would do',
@@ -100,8 +100,8 @@ export const historyImportUseHistoryImport = {
   pastedCells: 'pasted cells',
   checkingTheCells: 'Checking the cells',
   readingTheFile: 'Reading the file',
-  itHasMBAnd: (round: number, historyFileMaxBytes5: number) =>
-    `It has ${round} MB, and ${historyFileMaxBytes5 / 1024 / 1024} MB is the most. Import it in parts, such as a year at a time.`,
+  itHasMBAnd: (round: number, historyFileMaxBytes: number) =>
+    `It has ${round} MB, and ${historyFileMaxBytes / 1024 / 1024} MB is the most. Import it in parts, such as a year at a time.`,
   sendingTheFile: 'Sending the file',
   stopped: 'Stopped',
   nothingOfTheFile: 'Nothing of the file is kept, unless the server had finished already.',
@@ -111,15 +111,15 @@ export const historyImportWords = {
   theServerReadsAnd: 'The server reads and keeps the rows',
   addingUpDays: 'Adding up days',
   keepingAllOfIt: 'Keeping all of it',
-  fromToTo: (from: string, to: string) => `${from} to ${to}`,
-  readingsReadingsImported: (readings: number) =>
+  fromTo: (from: string, to: string) => `${from} to ${to}`,
+  readingsImported: (readings: number) =>
     `${counted(readings, 'reading')} ${readings === 1 ? 'is' : 'are'} imported`,
   spanListedSaidN5: (span: string, listedSaid: string, n: number) =>
     `${span}: ${listedSaid}${n > 5 ? ` and ${n - 5} more` : ''}. Pages show them where Wakeline measured nothing, and mark them.`,
   earlierReadingsAreNot: 'Earlier readings are not imported yet',
   reduceFromInForce: (reduce: number, inForce: number) =>
     `${counted(reduce, 'earlier reading')} from ${counted(inForce, 'file')}`,
-  chooseACSVOf:
+  chooseAcsvOf:
     'Choose a CSV of an earlier logger, or paste from a spreadsheet. Nothing is kept before you have seen what would come in, and each import can be taken back.',
   readTheirColumnsNeed: (rows: number) => `${counted(rows, 'row')} read; their columns need a word`,
   checkingRows: (rows: number) => `Checking ${counted(rows, 'row')}`,

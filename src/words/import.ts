@@ -15,12 +15,12 @@ export const changesSheet = {
     `The gravest ${number(changes)} of ${number(total)} are listed.`,
   compareWithTheRoof:
     'Compare with the roof before you go on: the as-built must say what is installed. The history keeps where each was.',
-  leavingLeavingSlot: (leaving: number) =>
+  leavingSlot: (leaving: number) =>
     `${number(leaving)} ${leaving === 1 ? 'unit leaves its' : 'units leave their'} slot`,
   why: 'Why',
   itStaysInThe: 'It stays in the history, with your name and the time.',
   asInstalledListOf: 'As installed, list of 30 November',
-  importRowsRows: (rows: number) => `Import ${number(rows)} ${rows === 1 ? 'row' : 'rows'}`,
+  importRows: (rows: number) => `Import ${number(rows)} ${rows === 1 ? 'row' : 'rows'}`,
 };
 
 export const columnsSheet = {
@@ -42,7 +42,7 @@ export const decisionsSheet = {
   namesInTheFile: 'Names in the file that mean nothing here yet',
   whichOneIsMeant: 'which one is meant?',
   nLikely: (n: string) => `${n} (likely)`,
-  inRowsRows: (rows: number) => `in ${number(rows)} ${rows === 1 ? 'row' : 'rows'}`,
+  inRows: (rows: number) => `in ${number(rows)} ${rows === 1 ? 'row' : 'rows'}`,
   columnTextMeans: (column: string, text: string) => `${column} “${text}” means `,
   takeBack: 'take back',
   andMore: (newStrings: number) => ` and ${number(newStrings - 8)} more`,
@@ -72,7 +72,7 @@ export const faultsSheet = {
   cellsThatClashWith: 'Cells that clash with the as-built',
   cellsThatNeedA: 'Cells that need a look',
   worthALookAnd: 'Worth a look, and no bar to the import',
-  asCSV: 'As CSV',
+  asCsv: 'As CSV',
   kind: 'Kind',
   allCount: (count: number) => `all (${number(count)})`,
   find: 'Find',
@@ -83,8 +83,8 @@ export const faultsSheet = {
   showMoreOf: (list: number) => `Show more of ${number(list)}`,
   theFirstOfAre: (faults: number, count: number) =>
     `The first ${number(faults)} of ${number(count)} are listed.`,
-  rowRowColumn: (row: number, column: string) => `row ${row}, ${column}`,
-  rowRow: (row: number) => `Row ${number(row)}`,
+  rowColumn: (row: number, column: string) => `row ${row}, ${column}`,
+  row: (row: number) => `Row ${number(row)}`,
   cellIn: (where: string) => `Cell in ${where}`,
   asYouWroteIt: ' (as you wrote it)',
   writeSuggestion: (suggestion: string) => `Write ${suggestion}`,

@@ -32,7 +32,7 @@ export const noticeLetters = {
   noMoreLettersLike: 'No more letters like this one',
   whatYouAreTold: (publicUrl: string, paths: string) =>
     `What you are told of, and when: ${publicUrl}${paths}`,
-  notSHUTTINGDOWN: 'NOT SHUTTING DOWN: ',
+  notShuttingDown: 'NOT SHUTTING DOWN: ',
 };
 
 export const accountLetters = {
@@ -57,7 +57,7 @@ export const noticeDigest = {
     `Worth: about ${energy(lossWhDay)} a day${lossWhDay2}.`,
   worthWhatItCosts: 'Worth: what it costs is not known.',
   onTheLadder: (ladder: string) => `On the ladder: ${ladder}`,
-  todoTodoToDo: (todo: number, lossWh: number, amount: string) =>
+  thingsToDo: (todo: number, lossWh: number, amount: string) =>
     `${countAtStart(todo)} ${todo === 1 ? 'thing' : 'things'} to do${lossWh > 0 ? `, worth about ${energy(lossWh)} a day${amount}` : ''}`,
   nothingHasToBe: (over: number) => `Nothing has to be done: ${counted(over, 'thing is', 'things are')} over`,
   nothingHasToBeDone: (kept: number) =>
@@ -111,7 +111,7 @@ export const letterPicture = {
 };
 
 export const lettersSentLetter = {
-  notSHUTTINGDOWN: (finding: string) => `NOT SHUTTING DOWN: ${finding}`,
+  notShuttingDown: (finding: string) => `NOT SHUTTING DOWN: ${finding}`,
   drawingAlt: (alt: string) => `[Drawing: ${alt}]`,
 };
 

@@ -5,7 +5,7 @@ export const lettersWords = {
   aLetterIsMarked: 'A letter is marked as sent only after the mail server took it.',
   noMailServerIs: (waiting: number) =>
     `${counted(waiting, 'letter waits', 'letters wait')}: no mail server is set`,
-  setSMTPURLWhat: 'Set SMTP_URL; what waits goes out by itself.',
+  setTheMailServer: 'Set SMTP_URL; what waits goes out by itself.',
   givenUp: (lost: number) => `${counted(lost, 'letter was', 'letters were')} given up`,
   theMailServerRefused: 'The mail server refused it for good, or twelve tries failed: see why below.',
   toBeSent: (waiting: number) => `${counted(waiting, 'letter waits', 'letters wait')} to be sent`,

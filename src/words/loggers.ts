@@ -3,14 +3,12 @@ import { counted } from '../drawings/numbers';
 export const byHttps = {
   itFetchesItsRoster:
     'It fetches its roster, which names its strings with their slots, and sends the same messages as on the WebSocket, one a line:',
-  curlAuthorizationBearerTOKEN: (origin: string, api: string, api2: string) =>
-    `curl -H "Authorization: Bearer TOKEN" ${origin}${api}\n\ncurl -H "Authorization: Bearer TOKEN" -H "Content-Type: application/x-ndjson" \\\n  --data-binary @readings.ndjson ${origin}${api2}`,
-  theAnswerComesOnce: (batchMessagesMax4: number, batchMaxBytes4: number, mB: number) =>
-    `The answer comes once everything is kept, and tells what was refused: which message, which field, what would do. Without an answer send all of it again; what comes twice is kept once. At most ${batchMessagesMax4} messages and ${batchMaxBytes4 / mB} MB at a time, packed with gzip if you like, and one batch of a logger after the other. 429 and 503 say in Retry-After when to come back.`,
+  theAnswerComesOnce: (batchMessagesMax: number, batchMaxBytes: number, mB: number) =>
+    `The answer comes once everything is kept, and tells what was refused: which message, which field, what would do. Without an answer send all of it again; what comes twice is kept once. At most ${batchMessagesMax} messages and ${batchMaxBytes / mB} MB at a time, packed with gzip if you like, and one batch of a logger after the other. 429 and 503 say in Retry-After when to come back.`,
 };
 
 export const endTokenDialog = {
-  endTokenTokenThis: (token: string) => `End ${token ? `“${token}”` : 'this token'} now`,
+  endTokenThis: (token: string) => `End ${token ? `“${token}”` : 'this token'} now`,
   whoeverSpeaksWithIt: (others: number, serial: string) =>
     `Whoever speaks with it is cut off at once. ${others === 0 ? `Logger ${serial} has no other token: it is refused until it gets a new one, and nothing of its units is heard. What it has not sent yet stays in it.` : 'Another token of this logger stays in force.'}`,
   why: 'Why',
@@ -27,7 +25,7 @@ export const loggerSheet = {
   notConnected: 'not connected',
   lastSpoke: 'Last spoke ',
   fromLastAddress: (lastAddress: string) => ` from ${lastAddress}`,
-  firmwareFirmware: (firmware: string) => `; firmware ${firmware}`,
+  firmware: (firmware: string) => `; firmware ${firmware}`,
   tokens: 'Tokens',
   makeAToken: 'Make a token',
   makeANewToken: 'Make a new token',

@@ -92,7 +92,7 @@ export const suspectsSheet = {
   reviewTheMove: 'Review the move',
   isolateToBeCertain: (which: string) => `Isolate ${which} to be certain`,
   wiredDifferentlyFromThe: 'Wired differently from the drawing?',
-  everyUnitAsCSV: 'Every unit as CSV',
+  everyUnitAsCsv: 'Every unit as CSV',
   ofStepsOfMin: (withCurrent: number, steps: number, stepS: number) =>
     `${withCurrent} of ${steps} steps of ${stepS / 60} min had current.`,
   noUnitCarriesAnother: 'No unit carries another string’s current, as far as it can be told',
@@ -117,7 +117,7 @@ export const membershipChart = {
 export const membershipWordsWords = {
   theLastHours: (hours: number) => `the last ${hours} hours`,
   isolateOneStringTo: 'Isolate one string to be certain.',
-  aAndBA: (a: string, b: string, outcome: string, outcome2: string, groups: number) =>
+  aAndBa: (a: string, b: string, outcome: string, outcome2: string, groups: number) =>
     `${a} and ${b} ${outcome === 'elsewhere' && outcome2 === 'elsewhere' ? 'look' : 'may be'} exchanged${groups > 1 ? `, and ${counted(groups - 1, 'more place')} ${groups === 2 ? 'doesn’t' : 'don’t'} fit` : ''}`,
   carriesTheCurrentOf: (a: string, otherString: string) => `${a} carries the current of ${otherString}`,
   doesNotCarryThe: (a: string, which: string) => `${a} does not carry the current of ${which}`,

@@ -15,7 +15,7 @@ export const readingsBoard = {
   allHere: (here: number) => `All ${here}`,
   notAsExpected: (here: number) => `Not as expected ${here}`,
   notRead: (here: number) => `Not read ${here}`,
-  readingsAsCSV: 'Readings as CSV',
+  readingsAsCsv: 'Readings as CSV',
   findAStringA: 'Find a string, a meaning or a person',
   stage: 'Stage',
   everyStage: 'every stage',

@@ -128,7 +128,7 @@ export const examplesCurrents = {
   unit5GivesWhere: 'Unit 5 gives, where its neighbours give 34 V',
   inSoManyOf: 'In so many of the day’s ten hours',
   bypassDiodesOfA: 'Bypass diodes of a module',
-  cantTellUnitsAre: (unitsMin3: number) => `Can’t tell: ${unitsMin3} units are needed to say what is usual`,
+  cantTellUnitsAre: (unitsMin: number) => `Can’t tell: ${unitsMin} units are needed to say what is usual`,
   noUnitOfThe: 'No unit of the string stands out',
   whatItLooksLike: 'What it looks like',
   itsVoltageOverIts: 'Its voltage over its neighbours’',

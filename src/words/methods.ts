@@ -11,8 +11,8 @@ export const methodsMath = {
 
 export const notesConduct = {
   whatAMeterReading: 'What a meter reading means',
-  everyWayInWhich: (tellFrom3: number) =>
-    `Every way in which the string can be (all in shutdown, some passing, a module not mated, reversed, an open lead and more) foretells a voltage and its uncertainty. The reading weighs them by Bayes. From a chance of ${percent(tellFrom3)} on an explanation is named as the finding; below that we say &ldquo;can’t tell&rdquo; and show what fits.`,
+  everyWayInWhich: (tellFrom: number) =>
+    `Every way in which the string can be (all in shutdown, some passing, a module not mated, reversed, an open lead and more) foretells a voltage and its uncertainty. The reading weighs them by Bayes. From a chance of ${percent(tellFrom)} on an explanation is named as the finding; below that we say &ldquo;can’t tell&rdquo; and show what fits.`,
   chanceOfAnExplanation: 'chance of an explanation',
   voltageThatAnExplanation: 'voltage that an explanation foretells',
   unitsPassTheirModules: (nominal: number, min: number, max: number, asExpected: number) =>
@@ -49,10 +49,10 @@ export const notesConduct = {
   thresholdOnTheHome: 'threshold on the home run',
   outputsAgainstTheInput: 'outputs against the input, released',
   heldUnitsOfA: 'held units of a silent string',
-  heldUnitsAreCounted: (steadyDeviations3: number, steadyS3: number, inputsDiffer3: number) =>
-    `Held units are counted where they miss six tenths of a module or ${steadyDeviations3} standard deviations for ${steadyS3 / 3600} h, for a shadow moves on. Inputs of one inverter are taken to differ by ${percent(inputsDiffer3, 1)} a module.`,
-  outsideTheArrayBoundary: (outsideArrayLimitV5: number) =>
-    `${outsideArrayLimitV5} V outside the array boundary: NEC 690.12(B)(1).`,
+  heldUnitsAreCounted: (steadyDeviations: number, steadyS: number, inputsDiffer: number) =>
+    `Held units are counted where they miss six tenths of a module or ${steadyDeviations} standard deviations for ${steadyS / 3600} h, for a shadow moves on. Inputs of one inverter are taken to differ by ${percent(inputsDiffer, 1)} a module.`,
+  outsideTheArrayBoundary: (outsideArrayLimitV: number) =>
+    `${outsideArrayLimitV} V outside the array boundary: NEC 690.12(B)(1).`,
   twiceTheUnitsHighest: 'Twice the units’ highest shutdown voltage: our own rule.',
   anInvertersCapacitorsHold: (capacitorHoldS: number) =>
     `An inverter's capacitors hold the home run up: nothing is said for ${capacitorHoldS} s after the limit.`,
@@ -80,8 +80,8 @@ export const notesConduct = {
     'What a passing unit should give now, from the most direct source there is: like strings of the plane, the string’s own passing units, the datasheet under measured light, the datasheet under a clear sky.',
   openCircuitVoltageFromA: 'open-circuit voltage from a datasheet',
   logarithmOfTheLight: 'Logarithm of the light: the diode equation. Cell temperature without a sensor: NOCT.',
-  spreadFromAtLeast: (siblingsForSpread4: number) =>
-    `Spread from at least ${siblingsForSpread4} siblings: 1.4826 × MAD (Iglewicz & Hoaglin 1993). Otherwise fixed and wide, from experience.`,
+  spreadFromAtLeast: (siblingsForSpread: number) =>
+    `Spread from at least ${siblingsForSpread} siblings: 1.4826 × MAD (Iglewicz & Hoaglin 1993). Otherwise fixed and wide, from experience.`,
   shadeOnAModule: 'Shade on a module is not foreseen.',
   underLoadTheDatasheets:
     'Under load the datasheet’s ratio of working to open-circuit voltage is taken as constant.',
@@ -89,15 +89,15 @@ export const notesConduct = {
 
 export const notesOutput = {
   lowOutput: 'Low output',
-  eachDaysSpecificYield: (daysLow3: number, daysLookedAt4: number) =>
-    `Each day’s specific yield of a string over that of its plane. Clipping, curtailment, grid loss, commanded shutdown and gaps are taken out first. Low on ${daysLow3} of ${daysLookedAt4} days with enough sun makes a finding; then the shape of the loss is looked at.`,
+  eachDaysSpecificYield: (daysLow: number, daysLookedAt: number) =>
+    `Each day’s specific yield of a string over that of its plane. Clipping, curtailment, grid loss, commanded shutdown and gaps are taken out first. Low on ${daysLow} of ${daysLookedAt} days with enough sun makes a finding; then the shape of the loss is looked at.`,
   modifiedZScore: 'modified z-score',
-  andAtLeastBelow: (lossMin3: number, sunEnough3: number) =>
-    `and at least ${percent(lossMin3)} below its siblings. A day counts from ${sunEnough3} kWh/kWp on.`,
-  iglewiczHoaglin: (zLimit3: number) => `|z| > ${zLimit3}: Iglewicz & Hoaglin 1993.`,
-  betweenStringsIEC: (lossMin3: number) => `${percent(lossMin3)} between strings: IEC 62446-1.`,
-  fewerThanStringsIn: (siblingsMin3: number) =>
-    `Fewer than ${siblingsMin3} strings in a plane: the datasheet model stands in, with a wide band.`,
+  andAtLeastBelow: (lossMin: number, sunEnough: number) =>
+    `and at least ${percent(lossMin)} below its siblings. A day counts from ${sunEnough} kWh/kWp on.`,
+  iglewiczHoaglin: (zLimit: number) => `|z| > ${zLimit}: Iglewicz & Hoaglin 1993.`,
+  betweenStringsIec: (lossMin: number) => `${percent(lossMin)} between strings: IEC 62446-1.`,
+  fewerThanStringsIn: (siblingsMin: number) =>
+    `Fewer than ${siblingsMin} strings in a plane: the datasheet model stands in, with a wide band.`,
   whereStringsShareAn: 'Where strings share an input, their sum is judged.',
   whatAllStringsOf: 'What all strings of a plane lose alike does not show here.',
   aWeakUnitIn: 'A weak unit in its string',
@@ -105,13 +105,13 @@ export const notesOutput = {
     'Each unit’s voltage over the median of its string, quarter by quarter of a day under load. A unit that is low nearly all day is told by how much is missing: all of it (held in shutdown, not mated), a whole number of bypassed sub-strings, or anything else; one that is low for some hours only is shaded, or has a contact that comes and goes.',
   low: 'low',
   kOfMSub: 'k of m sub-strings bypassed',
-  isMADOverThe: (heldBelow3: number, mOSTLY: number) =>
-    `σ is 1.4826 × MAD over the string's units. Nothing passes below ${percent(heldBelow3)}; nearly all day means ${percent(mOSTLY)} of the quarters.`,
-  robustStandardDeviationsIglewicz: (deviationsUnit3: number, lossMinUnit4: number) =>
-    `${deviationsUnit3} robust standard deviations: Iglewicz & Hoaglin 1993. At least ${percent(lossMinUnit4)}: from experience.`,
+  isMadOverThe: (heldBelow: number, mOSTLY: number) =>
+    `σ is 1.4826 × MAD over the string's units. Nothing passes below ${percent(heldBelow)}; nearly all day means ${percent(mOSTLY)} of the quarters.`,
+  robustStandardDeviationsIglewicz: (deviationsUnit: number, lossMinUnit: number) =>
+    `${deviationsUnit} robust standard deviations: Iglewicz & Hoaglin 1993. At least ${percent(lossMinUnit)}: from experience.`,
   halfAVoltAcross: 'Half a volt across a bypass diode: from experience.',
-  fewerThanUnitsOr: (unitsMin3: number, quartersMin3: number) =>
-    `Fewer than ${unitsMin3} units or ${quartersMin3} quarters under load say nothing.`,
+  fewerThanUnitsOr: (unitsMin: number, quartersMin: number) =>
+    `Fewer than ${unitsMin} units or ${quartersMin} quarters under load say nothing.`,
   anOptimizingUnitMoves: 'An optimizing unit moves its output, so its module side is looked at.',
   unitsInParallelStrings: 'Units in parallel strings are held against their own string only.',
   unitsThatReportNothing: 'Units that report nothing have no voltage of their own to look at.',
@@ -130,8 +130,8 @@ export const notesOutput = {
     'Between the units and the inverter input voltage is lost in proportion to the current. A robust fit finds the resistance; growth against its own past, or more than like strings have, is heat in one place.',
   loopOfAString: 'loop of a string',
   heat: 'heat',
-  isTheMeanOf: (excessOhm3: number, deviationsLoop3: number, loopsMin3: number) =>
-    `U is the mean of both ends; b takes up gain errors. ${excessOhm3} Ω more than before is worth a look, if it is ${deviationsLoop3} standard deviations as well. What ${loopsMin3} or more strings show alike is the weather's and taken off.`,
+  isTheMeanOf: (excessOhm: number, deviationsLoop: number, loopsMin: number) =>
+    `U is the mean of both ends; b takes up gain errors. ${excessOhm} Ω more than before is worth a look, if it is ${deviationsLoop} standard deviations as well. What ${loopsMin} or more strings show alike is the weather's and taken off.`,
   theilSenSlopesP: 'Theil–Sen slopes: P. K. Sen, 1968.',
   threshold10WIn: 'Threshold: 10 W in one place at 10 A, from experience.',
   bothEndsMustBe:
@@ -144,8 +144,8 @@ export const notesOutput = {
     'A pass needs a rated instrument at the inverter end of the home run: + to −, + to earth and − to earth, within the time of the rule set. Reports alone can only be consistent with a shutdown.',
   passOfAString: 'pass of a string',
   vAt: ' V  at  ',
-  withinNECAndLater: (outsideArrayLimitV5: number, timeLimitS: number) =>
-    `${outsideArrayLimitV5} V within ${timeLimitS} s: NEC 690.12(B)(1), 2017 and later editions.`,
+  withinNecAndLater: (outsideArrayLimitV: number, timeLimitS: number) =>
+    `${outsideArrayLimitV} V within ${timeLimitS} s: NEC 690.12(B)(1), 2017 and later editions.`,
   aResultSpeaksOf: 'A result speaks of the day of the test.',
   withoutLightThatPowers: 'Without light that powers the units a dead string proves nothing.',
   withSeveralTransmittersEach: 'With several transmitters each must be taken off alone once.',
@@ -153,11 +153,11 @@ export const notesOutput = {
   howManyOfThe:
     'How many of the units not yet heard will still answer, and by when. Strings, gateways and blocks of serials of which not one has stirred, though others long have, are named and left out.',
   notYetHeardAfter: 'not yet heard after a time',
-  neverAnswerTheBand: (bAND: number, notStirredBelow4: number) =>
-    `ν never answer. The band holds the middle ${percent(bAND)}; a group counts as not stirred below a chance of ${percent(notStirredBelow4)}.`,
+  neverAnswerTheBand: (bAND: number, notStirredBelow: number) =>
+    `ν never answer. The band holds the middle ${percent(bAND)}; a group counts as not stirred below a chance of ${percent(notStirredBelow)}.`,
   cureModelBoag1949:
     'Cure model: Boag 1949; Berkson & Gage 1952. Weighed on a grid by Bayes, priors from experience.',
-  fewerThanHeardSay: (heardMin3: number) => `Fewer than ${heardMin3} heard say nothing of the rest.`,
+  fewerThanHeardSay: (heardMin: number) => `Fewer than ${heardMin} heard say nothing of the rest.`,
   untilTheRollCall: 'Until the roll call is complete every string is to be treated as live.',
   yieldsAndThePerformance: 'Yields and the performance ratio',
   whatThePlantMade:

@@ -83,7 +83,7 @@ export const developersPageWords = {
   andTryTheExamples: ', and try the examples: they name your own sites. The same as',
   forTools: ', for tools.',
   yourAccountPage: 'your account page',
-  openAPI31: 'OpenAPI 3.1',
+  openApi31: 'OpenAPI 3.1',
   send: 'Send',
   ofAnAnswerAs: 'of an answer as',
   ofTheNextRequest:

@@ -92,8 +92,8 @@ export const papersEvidenceStringRows = {
   whenOpened: 'When opened',
   lookedAtAgain: 'Looked at again',
   sheet: 'Sheet',
-  inverterInputInput: (inverter: string, input: number) => `${inverter}, input ${input}`,
+  inverterInput: (inverter: string, input: number) => `${inverter}, input ${input}`,
   notKept: 'not kept',
   noLongerOnThe: 'no longer on the as-built',
-  inTheZIP: 'in the ZIP',
+  inTheZip: 'in the ZIP',
 };

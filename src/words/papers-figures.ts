@@ -61,8 +61,8 @@ export const papersFiguresWords = {
   noYearBeforeTo: 'no year before to compare',
   specificYield: 'Specific yield',
   noLightMeasuredIn: 'no light measured in the plane',
-  fellIntoThePlane: (insolationKWhM2: number) =>
-    `${quantity(insolationKWhM2, 'kWh/m²', 1)} fell into the plane`,
+  fellIntoThePlane: (insolationKWhM: number) =>
+    `${quantity(insolationKWhM, 'kWh/m²', 1)} fell into the plane`,
   performanceRatio: 'Performance ratio',
   needsASensorIn: 'needs a sensor in the plane',
   at25CPerformanceRatioStc: (

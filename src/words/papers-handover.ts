@@ -116,7 +116,7 @@ export const papersHandoverResults = {
   toEarth2: '− to earth',
   finding: 'Finding',
   takenBy: 'Taken by',
-  expectedLowVToExpectedHighVV: (expectedLowV: number, expectedHighV: number) =>
+  expectedLowVToExpectedHighVv: (expectedLowV: number, expectedHighV: number) =>
     `${number(expectedLowV, 1)} to ${number(expectedHighV, 1)} V`,
   notJudged: 'not judged',
   noReadingIsRecorded: 'No reading is recorded.',
@@ -162,7 +162,7 @@ export const papersHandoverResults = {
 export const papersHandoverSections = {
   rapidShutdown30S: 'rapid shutdown, 30 s (NEC 690.12, 2017 and later editions)',
   rapidShutdown10S: 'rapid shutdown, 10 s (the earlier edition)',
-  aListedPVHazard: 'a listed PV hazard control system',
+  aListedPvHazard: 'a listed PV hazard control system',
   oneOrTwoFamily: 'one- or two-family dwelling',
   otherBuilding: 'other building',
   notOnABuilding: 'not on a building',
@@ -182,7 +182,7 @@ export const papersHandoverSections = {
     `${number(units)}, ${quantity(data / 1000, 'kW', 1)} at standard test conditions`,
   strings: 'Strings',
   inverters: 'Inverters',
-  invertersReduceAC: (inverters: number, reduce: number) =>
+  invertersReduceAc: (inverters: number, reduce: number) =>
     `${number(inverters)}, ${quantity(reduce / 1000, 'kW', 1)} AC`,
   designTemperatures: 'Design temperatures',
   coldestHottestAir: (temperatureMin: string, temperatureMax: string) =>
@@ -202,11 +202,11 @@ export const papersHandoverSections = {
   n3SingleLineDescription: '3  Single-line description',
   everyStringEndsIn:
     'Every string ends in a home run at the inverter input named here; strings named together share the input and its voltage.',
-  acPowerMaxAC: (acPowerMax: number) => `${quantity(acPowerMax / 1000, 'kW', 1)} AC`,
-  inputInput: (input: number) => `input ${input}`,
+  acPowerMaxAc: (acPowerMax: number) => `${quantity(acPowerMax / 1000, 'kW', 1)} AC`,
+  input: (input: number) => `input ${input}`,
   nameSlotsUnitsKind: (name: string, slots: number, kind: string) => `${name} (${slots} units, ${kind})`,
   noString: 'no string',
-  inverterSpareSpareFree: (inverter: string, spare: number) =>
+  inverterSpareFree: (inverter: string, spare: number) =>
     `${inverter}: ${spare} ${spare === 1 ? 'input is' : 'inputs are'} free.`,
   shutdownInitiatorsZonesAnd: 'Shutdown: initiators, zones and transmitters',
   initiator: 'Initiator',
@@ -222,11 +222,11 @@ export const papersHandoverSections = {
   n4StringLayoutWith: '4  String layout with serials',
   slotsUnitsKindUnitType: (slots: number, kind: string, unitType: string) =>
     `${slots} units, ${kind}, ${unitType}`,
-  planePlane: (plane: string) => `plane ${plane}`,
-  inverterInputInput: (inverter: string, input: number) => `${inverter}, input ${input}`,
-  zoneZone: (zone: string) => `zone ${zone}`,
+  planeWords: (plane: string) => `plane ${plane}`,
+  inverterInput: (inverter: string, input: number) => `${inverter}, input ${input}`,
+  zoneWords: (zone: string) => `zone ${zone}`,
   hearsTransmitters: (transmitters: string) => `hears ${transmitters}`,
-  loggerLogger: (logger: string) => `logger ${logger}`,
+  loggerWords: (logger: string) => `logger ${logger}`,
   homeRunLeavesThe: 'home run leaves the array',
   homeRunStaysInside: 'home run stays inside the array',
   noUnit: 'no unit',

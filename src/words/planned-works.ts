@@ -25,5 +25,5 @@ export const plannedWorksWords = {
     'Isolate, lock out and prove dead with a rated meter; units that don’t shut down are still told at once.',
   plannedWorksSwitchNothing: 'Planned works switch nothing off.',
   theWholeSite2: 'the whole site',
-  stringsStrings: (strings: string) => `strings ${strings}`,
+  strings: (strings: string) => `strings ${strings}`,
 };

@@ -34,7 +34,7 @@ export const outlinePanel = {
   eastM: 'East (m)',
   northM: 'North (m)',
   remove: 'Remove',
-  pointII: (i: number, axis: number) => `Point ${i + 1}, ${axis === 0 ? 'east' : 'north'}`,
+  pointIi: (i: number, axis: number) => `Point ${i + 1}, ${axis === 0 ? 'east' : 'north'}`,
   removePoint: (i: number) => `Remove point ${i + 1}`,
   width: 'Width',
   depth: 'Depth',

@@ -5,7 +5,7 @@ export const savedViewsWords = {
   saving: 'Saving …',
   saveTheView: 'Save the view',
   shared: 'shared',
-  byBy: (by: string) => `by ${by}`,
+  by: (by: string) => `by ${by}`,
   unshareView: (view: string) => `Unshare “${view}”`,
   shareView: (view: string) => `Share “${view}”`,
   keepToMyself: 'Keep to myself',

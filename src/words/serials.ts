@@ -22,7 +22,7 @@ export const clashList = {
 export const positionStrip = {
   positionsOf: (which: string) => `Positions of ${which}`,
   n1IsAtThe: '1 is at the negative end',
-  positionPositionSerial: (position: number, serial: null | string) =>
+  positionSerial: (position: number, serial: null | string) =>
     `Position ${position}: ${serial ?? 'no serial yet'}`,
   noSerialYet: 'no serial yet',
 };
@@ -46,7 +46,7 @@ export const serials = {
   sendNow: 'Send now',
   onTheWayTo: 'On the way to the server.',
   serialAtPosition: (which: string, position: number) => `Serial at ${which}, position ${position}`,
-  nowNow: (now: string) => `now: ${now}`,
+  now: (now: string) => `now: ${now}`,
   empty: 'empty',
   serial: 'Serial',
   asOnTheLabel: 'as on the label',
@@ -77,7 +77,7 @@ export const serialsSettings = {
 export const serialsModel = {
   nothingIsTyped: 'Nothing is typed',
   typeTheSerialOr: 'Type the serial, or skip this position.',
-  whichPositionPosition: (which: string, position: number) => `${which}, position ${position}`,
+  whichPosition: (which: string, position: number) => `${which}, position ${position}`,
   allSerialsOfAre: (n: number, which: string) => `All ${n} serials of ${which} are read`,
   theOneSerialOf: (which: string) => `The one serial of ${which} is still to be read`,
   serialsOfAreStill: (n: number, which: string) => `${n} serials of ${which} are still to be read`,

@@ -7,7 +7,7 @@ export const logoSheet = {
   anotherPicture: 'Another picture',
   aPicture: 'A picture',
   takeItAway: 'Take it away',
-  pngJPEGOrWebP:
+  pngJpegOrWebP:
     'PNG, JPEG or WebP, at most 5 MB. The picture is made anew; nothing else in the file is kept.',
   roundSent: (round: number) => ` ${round} % sent.`,
 };
@@ -53,7 +53,7 @@ export const thresholdsSheet = {
   theyHoldFromThe:
     'They hold from the next judgement on; what was judged before stays as it was. Limits of rapid shutdown (30 V, the rule set’s time) are no setting.',
   thresholds: 'Thresholds',
-  changesDefaultDefaultWordsSource: (changes: string, defaultWords: string, source: string) =>
+  changesDefaultAndSource: (changes: string, defaultWords: string, source: string) =>
     `${changes} Default: ${defaultWords} (${source}).`,
   saving: 'Saving',
   saveTheThresholds: 'Save the thresholds',

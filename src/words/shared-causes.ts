@@ -44,7 +44,7 @@ export const sharedCausesPlaces = {
   countedPositionsUnit: (positions: number) => counted(positions, 'unit'),
   position: 'position',
   positions: 'positions',
-  stringStringNamePositions: (stringName: string, positions: string) => `string ${stringName}, ${positions}`,
+  stringNamePositions: (stringName: string, positions: string) => `string ${stringName}, ${positions}`,
   stringsListedSaid: (listedSaid: string) => `strings ${listedSaid}`,
   countedPlacesString: (places: number) => counted(places, 'string'),
   countedKnownUnit: (known: number) => counted(known, 'unit'),

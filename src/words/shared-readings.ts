@@ -45,7 +45,7 @@ export const readAloud = {
 };
 
 export const readingScale = {
-  expectedExpected: (expected: string) => `expected: ${expected}`,
+  expected: (expected: string) => `expected: ${expected}`,
 };
 
 export const sharedReadingsForm = {
@@ -100,7 +100,7 @@ export const sharedReadingsWords = {
   released: 'released',
   nobodyHasSaid: 'nobody has said',
   countedUnitsUnit: (units: number) => counted(units, 'unit'),
-  unitsUnits: (units: string) => `${units || '?'} units`,
+  units: (units: string) => `${units || '?'} units`,
   moduleOf: (count: string, kind: string, sheet: string | undefined) =>
     `${count}, ${kind}; module of ${sheet ?? 'own values'}`,
   openCircuitStringIsolated: 'Open circuit, string isolated, positive to negative.',
@@ -117,7 +117,7 @@ export const sharedReadingsWords = {
   under: `under ${percent(0.01)}`,
   fromToDigitsV: (from: number, digits: number, to: number) =>
     `${number(from, digits)} to ${number(to, digits)} V`,
-  expectedExpected: (expected: string) => `Expected: ${expected}.`,
+  expected: (expected: string) => `Expected: ${expected}.`,
   thatWouldRead: (band: string) => `That would read ${band}.`,
   oneUnitInShutdown: (nominal: string, min: string, max: string) =>
     `One unit in shutdown is worth ${nominal}, ${min} to ${max} by its type.`,

@@ -1,7 +1,7 @@
 import { longDate } from '../drawings/times';
 
 export const sharedPages = {
-  endedEndedAt: (endedAt: string, timeZone: string) => `ended ${longDate(endedAt, timeZone)}`,
+  endedAt: (endedAt: string, timeZone: string) => `ended ${longDate(endedAt, timeZone)}`,
   untilSomebodyEndsIt: 'until somebody ends it',
   ranOutAfter: 'ran out after',
   until: 'until',

@@ -153,10 +153,10 @@ export const roundDrawing = {
   newest: 'Newest',
   atOrUnderIts: 'At or under its limit',
   from: 'From',
-  nAfterAfterSS: (n: number, afterS: number) => `${volts(n)} after ${afterS} s`,
+  afterSeconds: (n: number, afterS: number) => `${volts(n)} after ${afterS} s`,
   notKnown: 'not known',
   notUnder: (limitV: number) => `not under ${limitV} V`,
-  limitVVAfterUnderFromS: (limitV: number, underFromS: number) => `${limitV} V after ${underFromS} s`,
+  limitVvAfterUnderFromS: (limitV: number, underFromS: number) => `${limitV} V after ${underFromS} s`,
 };
 
 export const roundStep = {
@@ -175,7 +175,7 @@ export const roundStep = {
   asAPersonNoted: 'As a person noted it:',
   notYet: 'not yet',
   whenToOfEach: 'When + to − of each string is read, ',
-  operatesWhatPlacePlace: (what: string, place: string) =>
+  operatesWhatPlace: (what: string, place: string) =>
     ` operates ${what}${place && ` (${place})`} by hand. Wakeline switches nothing; it only notes the time.`,
   personTakesOffBy: (what: string) =>
     `A person takes ${what} off by hand. Wakeline switches nothing; it only notes the time.`,
@@ -191,7 +191,7 @@ export const roundStep = {
   endThisRound: 'End this round',
   beforeTheCommand: 'Before the command',
   homeRunsAtThe: 'Home runs at the inverter’s end',
-  stringsStrings: (strings: number) => `${strings} strings`,
+  strings: (strings: number) => `${strings} strings`,
   voltageOfEachString: 'Voltage of each string',
   limitsSource: (source: string) => `limits: ${source}`,
   homeRunAtThe: (part: string) => `${part}, home run at the inverter’s end`,
@@ -281,7 +281,7 @@ export const shutdownTestWords = {
   readToOfEach: 'Read + to − of each home run first: only a string that was live can be shown dead.',
   wasOperatedReadThe: (transmitter: null | string, initiator: string, name: string) =>
     `${transmitter === null ? initiator : name} was operated: read the home runs`,
-  toToEarthAnd: (afterS: number) =>
+  plusMinusAndEarth: (afterS: number) =>
     `+ to −, + to earth and − to earth at the inverter’s end, within ${afterS} s.`,
   releasedWatchComeBack: (zone: string) => `Released: watch ${zone} come back`,
   unitsThatDoNot: 'Units that do not come back are stuck; the verdict names them.',

@@ -57,7 +57,7 @@ export const unitsTable = {
 };
 
 export const shutdownColumns = {
-  sinceUTC: 'since (UTC)',
+  sinceUtc: 'since (UTC)',
   sharedPart: 'shared part',
   couldAlsoBe: 'could also be',
   confidence: 'confidence (%)',

@@ -39,7 +39,7 @@ export const invertersSheet = {
   earthFaultFlag: 'Earth-fault flag',
   acPowerOfAcPower: (acPower: null | number, acPowerMax: number) =>
     `${power(acPower)} of ${power(acPowerMax)}`,
-  insulationInsulation: (insulation: string) => ` · insulation ${insulation} · `,
+  insulation: (insulation: string) => ` · insulation ${insulation} · `,
   limitedTo: (powerLimit: number) => `, limited to ${power(powerLimit)}`,
   notReportedYet: 'not reported yet',
   inputsOf: (inverter: string) => `Inputs of ${inverter}`,
@@ -87,7 +87,7 @@ export const radioSheet = {
   silent: 'Silent',
   loggerSerial: (serial: string) => `Logger ${serial}`,
   lastSpoke: 'last spoke ',
-  firmwareFirmware: (firmware: string) => `firmware ${firmware} · `,
+  firmware: (firmware: string) => `firmware ${firmware} · `,
   tokensOfTheLoggers: 'Tokens of the loggers, and what was refused',
   whetherUnitsBehindA:
     "Whether units behind a silent gateway follow a shutdown can't be confirmed until it is heard again.",
@@ -125,10 +125,10 @@ export const standingSheet = {
 
 export const stringsSheet = {
   conductorsStayLive: 'Conductors stay live',
-  stuckStuck: (stuck: number) => `${number(stuck)} stuck`,
+  stuck: (stuck: number) => `${number(stuck)} stuck`,
   stuckPositionsUnknown: 'Stuck, positions unknown',
   voltageNotExplained: 'Voltage not explained',
-  unconfirmedUnconfirmed: (unconfirmed: number) => `${number(unconfirmed)} unconfirmed`,
+  unconfirmed: (unconfirmed: number) => `${number(unconfirmed)} unconfirmed`,
   tellsNothing: 'tells nothing',
   heardOfUnits: (heard: number, units: number) => `${number(heard)} of ${number(units)}`,
   string: 'String',
@@ -142,7 +142,7 @@ export const stringsSheet = {
   power: 'Power',
   heard: 'Heard',
   weakestSignal: 'Weakest signal',
-  positionPosition: (position: number) => `position ${position}`,
+  position: (position: number) => `position ${position}`,
   strings: 'Strings',
   countedShownString: (shown: number) => counted(shown, 'string'),
   ofStrings: (strings: number) => ` of ${number(strings)}`,

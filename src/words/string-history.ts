@@ -138,7 +138,7 @@ export const notesSheet = {
   theNoteIsTaken: 'The note is taken away.',
   putItBack: 'Put it back',
   noneYetChooseA: 'None yet. Choose a moment in the history, then pin what is worth remembering.',
-  toTo: (to: string, at: string, timeZone: string) => ` to ${clockOrDate(to, at, timeZone)}`,
+  to: (to: string, at: string, timeZone: string) => ` to ${clockOrDate(to, at, timeZone)}`,
   wholeSite: 'whole site',
   takeAway: 'Take away',
   takeAwayTheNote: (note: string) => `Take away the note “${note}”`,

@@ -2,12 +2,12 @@ import { number } from '../drawings/numbers';
 
 export const fileSheet = {
   theFile: 'The file',
-  aFileCSVOr: 'A file: CSV or tab-separated',
+  aFile: 'A file: CSV or tab-separated',
   orPasteCellsFrom: 'Or paste cells from a spreadsheet',
   readWhatIsPasted: 'Read what is pasted',
   thisCantBeRead: "This can't be read",
   headersColumns: (headers: number) => `, ${headers} columns`,
-  rowsRows: (rows: number) => `${number(rows)} rows`,
+  rows: (rows: number) => `${number(rows)} rows`,
   emptyLeftOut: (emptyLines: number) =>
     `${number(emptyLines)} empty ${emptyLines === 1 ? 'line' : 'lines'} left out`,
   cellsAreSeparatedBy: 'Cells are separated by',
@@ -21,7 +21,7 @@ export const tableDecode = {
   windows1252WesternEuropean: 'Windows-1252 (Western European)',
   aSpreadsheetFileSuch: 'a spreadsheet file (such as .xlsx or .ods)',
   aSpreadsheetFileOf: 'a spreadsheet file of an older kind (.xls)',
-  aPDF: 'a PDF',
+  aPdf: 'a PDF',
   aPhoto: 'a photo',
   aPicture: 'a picture',
   thisIsSaveThe: (what: string) =>

@@ -7,7 +7,7 @@ export const traceSheet = {
   newest: 'Newest',
   orLess: (voltage: number) => `${voltage} V or less`,
   fromTheStart: 'from the start',
-  afterUnderFromSS: (underFromS: number) => `after ${underFromS} s`,
+  afterUnderFromSs: (underFromS: number) => `after ${underFromS} s`,
   measured: 'Measured',
   voltageInTheSeconds: (startedAt: string, timeZone: string, words: string) =>
     `Voltage in the seconds after ${clockSeconds(startedAt, timeZone)}. ${words}`,
@@ -25,7 +25,7 @@ export const traceModel = {
   atTheInvertersInput: 'at the inverter’s input, which its capacitors hold up',
   sumOfWhatIts: 'sum of what its units report',
   noVoltagesHaveBeen: 'No voltages have been recorded second by second yet.',
-  untoldUntoldNothing: (untold: number) =>
+  untoldNothing: (untold: number) =>
     ` ${counted(untold, 'string')} ${untold === 1 ? 'tells' : 'tell'} nothing.`,
   noStringHasTold: (rest: string) => `No string has told its voltage since the command.${rest}`,
   ofAboveAgain: (up: number, known: number, voltage: number, rest: string) =>

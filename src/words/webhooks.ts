@@ -10,7 +10,7 @@ export const deliveryList = {
   whatWasSentAnd: 'What was sent, and what came back',
   showIt: 'Show it',
   whatWasSent: 'What was sent',
-  statusLatencyMsMs: (status: null | number, latencyMs: number) =>
+  statusAndLatency: (status: null | number, latencyMs: number) =>
     `: ${status === null ? 'no answer' : status}, ${number(latencyMs)} ms`,
 };
 
@@ -22,7 +22,7 @@ export const secretNotice = {
 export const verifySheet = {
   namesTheCallThe: 'names the call: the same at every try. Keep it, and a call that comes twice counts once.',
   whenItWasSigned: 'when it was signed, in seconds since 1970-01-01 UTC.',
-  sha256AndTheHMAC: 'sha256= and the HMAC-SHA256 of time, a full stop and the body, with the secret, in hex.',
+  sha256AndHmac: 'sha256= and the HMAC-SHA256 of time, a full stop and the body, with the secret, in hex.',
   whatAReceiverDoes: 'What a receiver does',
   aCallIsA:
     'A call is a POST with JSON. Answer with any status from 200 to 299 within ten seconds, then do your work. Anything else counts as failed: it is tried again after 1, 5 and 30 minutes, then hours, then daily. Redirects are not followed. Calls can overtake each other: go by the times in them.',

@@ -45,7 +45,7 @@ export function placesInWords(units: readonly Unit[]): string {
   const first = places[0];
   if (!first) return '';
   if (places.length === 1)
-    return sharedCausesPlaces.stringStringNamePositions(first.stringName, positionsInWords(first.positions));
+    return sharedCausesPlaces.stringNamePositions(first.stringName, positionsInWords(first.positions));
   const known = units.filter((u) => u.position !== null).length;
   const names =
     places.length <= 4

@@ -134,7 +134,7 @@ function words(model: HeatModel, cell: HeatCell): string {
   const value =
     cell.value === null ? heatStrip.nothingReported : quantity(cell.value, model.unit, model.digits);
   const share = cell.ratio === null ? '' : heatStrip.ofTheStringsMiddle(cell.ratio);
-  return heatStrip.atPositionPositionValue(cell.at, model.timeZone, cell.position, value, share);
+  return heatStrip.atPositionValue(cell.at, model.timeZone, cell.position, value, share);
 }
 
 function Legend({ model, range }: { model: HeatModel; range: [number, number] }) {

@@ -53,7 +53,7 @@ export function ReadingScale({ answer, question }: { answer: Interpretation; que
       </div>
       <figcaption className="mt-1 flex flex-wrap justify-between gap-x-4 text-xs text-ink-2">
         <span>{scale.step}</span>
-        {expected && <span className="text-ink">{readingScale.expectedExpected(expected.words)}</span>}
+        {expected && <span className="text-ink">{readingScale.expected(expected.words)}</span>}
       </figcaption>
     </figure>
   );

@@ -51,7 +51,7 @@ export function stringWords(form: ReadingForm): string {
   const units = form.units.trim();
   const count = /^\d+$/.test(units)
     ? sharedReadingsWords.countedUnitsUnit(Number(units))
-    : sharedReadingsWords.unitsUnits(units);
+    : sharedReadingsWords.units(units);
   return sharedReadingsWords.moduleOf(count, kind, sheet && SHEETS[sheet].name);
 }
 
@@ -130,7 +130,7 @@ export function expectedWords(answer: Interpretation): { words: string; from: nu
 /** What the answer rests on and what would make it firmer. */
 export function reasoning(answer: Interpretation, question: ReadingQuestion): string[] {
   const { units, unitType, meter, siblings, voltageV } = question;
-  const sentences = [sharedReadingsWords.expectedExpected(answer.expected)];
+  const sentences = [sharedReadingsWords.expected(answer.expected)];
   const band = expectedWords(answer);
   if (band) sentences.push(sharedReadingsWords.thatWouldRead(band.words));
   const { passing } = expectedState(question);

@@ -109,7 +109,7 @@ export function SavedViews({ list, path, query, initial }: Props) {
                 {view.name}
                 {view.shared && (
                   <span className="ml-1.5 text-sm font-normal text-ink-2">
-                    {view.own ? savedViewsWords.shared : savedViewsWords.byBy(view.by)}
+                    {view.own ? savedViewsWords.shared : savedViewsWords.by(view.by)}
                   </span>
                 )}
               </a>

@@ -60,7 +60,7 @@ export function FileSheet({ hint, name, facts, fault, onFile, onPaste, onSplit }
       >
         <div>
           <label htmlFor={fileId} className="mb-1 block font-medium">
-            {fileSheet.aFileCSVOr}
+            {fileSheet.aFile}
           </label>
           <input
             id={fileId}
@@ -109,7 +109,7 @@ export function FileSheet({ hint, name, facts, fault, onFile, onPaste, onSplit }
       {facts && (
         <div className="mt-4 grid items-end gap-4 sm:grid-cols-2 lg:grid-cols-4">
           <p className="text-[15px]">
-            <strong className="font-semibold">{fileSheet.rowsRows(facts.rows)}</strong>
+            <strong className="font-semibold">{fileSheet.rows(facts.rows)}</strong>
             {fileSheet.headersColumns(facts.headers.length)}
             {facts.encoding && <>, {ENCODING_NAMES[facts.encoding]}</>}
             {facts.emptyLines > 0 && (

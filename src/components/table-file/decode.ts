@@ -14,7 +14,7 @@ export const ENCODING_NAMES: Record<Encoding, string> = {
 const NO_TEXT: readonly { starts: readonly number[]; what: string }[] = [
   { starts: [0x50, 0x4b, 0x03, 0x04], what: tableDecode.aSpreadsheetFileSuch },
   { starts: [0xd0, 0xcf, 0x11, 0xe0], what: tableDecode.aSpreadsheetFileOf },
-  { starts: [0x25, 0x50, 0x44, 0x46], what: tableDecode.aPDF },
+  { starts: [0x25, 0x50, 0x44, 0x46], what: tableDecode.aPdf },
   { starts: [0xff, 0xd8, 0xff], what: tableDecode.aPhoto },
   { starts: [0x89, 0x50, 0x4e, 0x47], what: tableDecode.aPicture },
 ];

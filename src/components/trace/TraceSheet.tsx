@@ -41,7 +41,7 @@ const columns = (limit: SiteTraces['limit']): Column<TraceFacts>[] => [
         ? UNKNOWN
         : f.underFromS === 0
           ? traceSheet.fromTheStart
-          : traceSheet.afterUnderFromSS(f.underFromS),
+          : traceSheet.afterUnderFromSs(f.underFromS),
   },
   {
     key: 'point',

@@ -68,7 +68,7 @@ export function traceWords(read: SiteTraces): string {
   const facts = bestTraces(read.traces).map((t) => factsOf(t, read.limit.voltage));
   const known = facts.filter((f) => f.last !== null);
   const untold = facts.length - known.length;
-  const rest = untold > 0 ? traceModel.untoldUntoldNothing(untold) : '';
+  const rest = untold > 0 ? traceModel.untoldNothing(untold) : '';
   if (known.length === 0) return traceModel.noStringHasTold(rest);
   const under = known.filter((f) => f.underFromS !== null);
   if (!read.command || !SHUTDOWN.has(read.command.inForce)) {

@@ -33,7 +33,7 @@ export function SecondFactor({ page, onChanged }: { page: AccountPage; onChanged
               <>
                 {secondFactorWords.inForceSince}
                 <SiteTime at={since} now={page.at} timeZone={page.person.timeZone} />
-                {secondFactorWords.recoveryCodesLeftLeft(recoveryCodesLeft)}
+                {secondFactorWords.recoveryCodesLeft(recoveryCodesLeft)}
               </>
             ) : (
               secondFactorWords.noneWithOneSign

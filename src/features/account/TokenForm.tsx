@@ -87,7 +87,7 @@ export function TokenForm({
       </details>
       <Choice
         label={tokenForm.holdsFor}
-        options={TOKEN_DAYS.map((days) => ({ value: String(days), label: tokenForm.daysDays(days) }))}
+        options={TOKEN_DAYS.map((days) => ({ value: String(days), label: tokenForm.days(days) }))}
         value={String(typed.days)}
         error={faultOf('days')}
         onChange={(days) => change({ days: Number(days) })}

@@ -226,7 +226,7 @@ function Life({ stays, page }: { stays: readonly Stay[]; page: HistoryPage }) {
                 className="text-petrol hover:underline"
                 href={`${paths.asBuilt(stay.siteId)}?string=${stay.stringId}`}
               >
-                {historyBoard.whichPositionPosition(stay.string, stay.position)}
+                {historyBoard.whichPosition(stay.string, stay.position)}
               </a>
             </span>
             {stay.siteId !== page.site.id && <span>{stay.site}</span>}

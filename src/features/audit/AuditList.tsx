@@ -66,7 +66,7 @@ function Entry({ item, at, timeZone }: { item: AuditItem; at: string; timeZone: 
           {changes.length > SHOWN_CHANGES && (
             <details>
               <summary className="target flex cursor-pointer items-center text-ink-2">
-                {auditList.countedChangesSHOWNCHANGES(changes.length, SHOWN_CHANGES)}
+                {auditList.moreFields(changes.length, SHOWN_CHANGES)}
               </summary>
               <Changes changes={changes.slice(SHOWN_CHANGES)} />
             </details>

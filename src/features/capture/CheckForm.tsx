@@ -191,7 +191,7 @@ export function CheckForm(props: Props) {
           {checkForm.notApplicable2(check.offersNotApplicable)}
         </Button>
       )}
-      <p className="text-xs text-ink-2">{checkForm.sourceSource(check.source)}</p>
+      <p className="text-xs text-ink-2">{checkForm.source(check.source)}</p>
     </div>
   );
 }

@@ -100,10 +100,10 @@ export function CaseFile({ initial }: { initial: CasePage }) {
               <p className="mb-3 text-ink-2">{caseFile.whatIsWrongThe}</p>
               <div className="flex flex-wrap gap-2">
                 <ButtonLink href={paths.api.casePack(c.id, 'pdf')} download>
-                  {caseFile.evidenceAsPDF}
+                  {caseFile.evidenceAsPdf}
                 </ButtonLink>
                 <ButtonLink href={paths.api.casePack(c.id, 'zip')} download>
-                  {caseFile.allAsZIP}
+                  {caseFile.allAsZip}
                 </ButtonLink>
               </div>
             </Sheet>

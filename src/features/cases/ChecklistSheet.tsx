@@ -69,13 +69,13 @@ function Line({ item, hand }: { item: ChecklistItem; hand: CaseInHand }) {
         <span className="min-w-0">
           <span className="block text-[16px] font-medium leading-6">{item.check}</span>
           <span className="block text-ink-2">{item.why}</span>
-          {item.caution && <span className="sr-only">{checklistSheet.cautionCaution(item.caution)}</span>}
+          {item.caution && <span className="sr-only">{checklistSheet.caution(item.caution)}</span>}
         </span>
       </label>
       <div className="ml-9 flex flex-wrap items-center gap-x-4 text-sm text-ink-2">
         {mark && (
           <span>
-            {checklistSheet.doneByBy(mark.done, mark.by)}
+            {checklistSheet.doneBy(mark.done, mark.by)}
             <RelativeTime at={mark.at} now={page.at} timeZone={page.case.timeZone} />
             {mark.note && <>: {mark.note}</>}
           </span>

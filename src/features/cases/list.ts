@@ -80,8 +80,8 @@ export function casesFinding({ cases, me }: CasesPage): { finding: string; sente
       sentence: caseBoardList.openOneFromA,
     };
   const parts = [
-    overdue > 0 ? caseBoardList.overdueOverdueOverdue(overdue) : caseBoardList.noneIsOverdue,
-    mine > 0 ? caseBoardList.mineMineYours(mine) : '',
+    overdue > 0 ? caseBoardList.areOverdue(overdue) : caseBoardList.noneIsOverdue,
+    mine > 0 ? caseBoardList.areYours(mine) : '',
     nobodys > 0 ? caseBoardList.nobodyYet(nobodys) : '',
   ].filter(Boolean);
   const list =

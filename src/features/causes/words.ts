@@ -60,7 +60,7 @@ export function listFinding(page: CausesPage): { finding: string; sentence: stri
         };
   const perDay = open.reduce((sum, c) => sum + (c.lossWhDay ?? 0), 0);
   return {
-    finding: causesWords.openOpenOpenOpen(open.length, atSites(open)),
+    finding: causesWords.causesAreOpen(open.length, atSites(open)),
     sentence: perDay > 0 ? causesWords.togetherTheyCostAbout(perDay) : causesWords.theGravestComeFirst,
   };
 }
@@ -71,7 +71,7 @@ function hazardSubject(hazards: readonly CauseItem[]): string {
   const units = all.filter((u) => u.position !== null).length;
   const n = units > 0 ? units : new Set(all.map((u) => u.stringId)).size;
   const one = units > 0 ? 'unit' : 'string';
-  return causesWords.nN1N(n, one);
+  return causesWords.doNotShutDown(n, one);
 }
 
 export const filtered = ({ view }: Pick<CausesPage, 'view'>): boolean =>
@@ -94,6 +94,6 @@ export function partsWords(units: CauseItem['units']): string {
   const where = strings.length > 3 ? causesWords.countedStringsString(strings.length) : strings.join(', ');
   if (units.every((u) => u.position === null)) return `${strings.length === 1 ? 'string ' : ''}${where}`;
   const one = units[0];
-  if (units.length === 1 && one) return causesWords.stringNamePositionPosition(one.stringName, one.position);
+  if (units.length === 1 && one) return causesWords.stringPosition(one.stringName, one.position);
   return causesWords.unitsOfWhere(units.length, where);
 }

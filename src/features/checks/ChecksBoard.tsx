@@ -106,7 +106,7 @@ export function ChecksBoard({ initial, view: first, mayWrite, mayRecordEvidence 
                   onChange={(show) => change({ show })}
                 />
                 <ButtonLink href={paths.api.checksCsv(site.id)} download>
-                  {checksBoard.checksAsCSV}
+                  {checksBoard.checksAsCsv}
                 </ButtonLink>
               </div>
             }

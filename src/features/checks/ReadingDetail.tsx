@@ -92,7 +92,7 @@ function Reading({
         {finding && <span className="font-normal">. {finding.headline}</span>}
       </h3>
       <p className="text-ink-2">
-        {finding && readingDetail.expectedExpected(finding.expected)}
+        {finding && readingDetail.expected(finding.expected)}
         {finding?.expectedLowV !== null && finding?.expectedHighV !== null && finding
           ? readingDetail.thatReadsTo(finding.expectedLowV, finding.expectedHighV)
           : ''}

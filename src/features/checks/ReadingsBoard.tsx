@@ -177,7 +177,7 @@ export function ReadingsBoard({ initial, view: first, mayWrite }: Props) {
                   onChange={(show) => change({ show })}
                 />
                 <ButtonLink href={paths.api.readingsCsv(site.id)} download>
-                  {readingsBoard.readingsAsCSV}
+                  {readingsBoard.readingsAsCsv}
                 </ButtonLink>
               </div>
             }

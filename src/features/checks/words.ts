@@ -45,7 +45,7 @@ export function checksSentence(rows: readonly StringRow[]): { strong: string; re
   const rest: string[] = [];
   if (amiss.length > 0) rest.push(checksWords.checkThatDidNot(names(amiss), amiss.length));
   if (ready.length > 0)
-    rest.push(checksWords.readyReadyReadyTo(ready.length, names(ready), stale.length, names(stale)));
+    rest.push(checksWords.readyToSignWords(ready.length, names(ready), stale.length, names(stale)));
   if (risk.length === 0 && amiss.length === 0 && ready.length === 0)
     rest.push(
       rows.every((r) => r.status === 'signed') ? checksWords.nothingIsLeftTo : checksWords.recordTheChecksOn,

@@ -79,7 +79,7 @@ export function StringsSheet({ siteId, tally, view: initial }: Props) {
             onChange={(strings) => change({ strings })}
           />
           <ButtonLink href={paths.api.rollCallCsv(siteId)} download>
-            {stringsSheet.unitsAsCSV}
+            {stringsSheet.unitsAsCsv}
           </ButtonLink>
         </div>
       }

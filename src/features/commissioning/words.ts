@@ -70,7 +70,7 @@ function running(
       strong: commissioningWords.noFurtherAnswersAre,
       rest: rest || commissioningWords.notAnsweredWalkTo(missing, have(missing)),
     };
-  const when = outlook.by ? commissioningWords.byBy(outlook.by, timeZone) : '';
+  const when = outlook.by ? commissioningWords.by(outlook.by, timeZone) : '';
   const who =
     outlook.expected >= missing
       ? missing === 1

@@ -45,7 +45,7 @@ function MonthReports({ roof }: { roof: CustomerSite }) {
       href={paths.api.customerMonth(roof.site.id, month)}
       className="inline-flex min-h-[44px] items-center text-petrol hover:underline"
     >
-      {roofPage.monthPDF(monthWords(month))}
+      {roofPage.monthPdf(monthWords(month))}
     </a>
   );
   return (
@@ -79,7 +79,7 @@ function HandoverPapers({ roof }: { roof: CustomerSite }) {
           href={file(newest)}
           className="inline-flex min-h-[44px] items-center font-semibold text-petrol hover:underline"
         >
-          {roofPage.handoverPapersPDF}
+          {roofPage.handoverPapersPdf}
         </a>
       </p>
       {earlier.length > 0 && (
@@ -92,7 +92,7 @@ function HandoverPapers({ roof }: { roof: CustomerSite }) {
                   href={file(paper)}
                   className="inline-flex min-h-[44px] items-center text-petrol hover:underline"
                 >
-                  {roofPage.versionVersionPaper(paper.version, day(paper))}
+                  {roofPage.versionOfPaper(paper.version, day(paper))}
                 </a>
               </li>
             ))}

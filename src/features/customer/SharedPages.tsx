@@ -17,7 +17,7 @@ import { sharedPages } from '../../words/sharing';
 /** "until 3 December 2026": the last day on which it works, which ends a moment before its instant. */
 const untilWords = (link: ShareLinkItem, timeZone: string): string => {
   const last = (at: string) => longDate(Date.parse(at) - 1000, timeZone);
-  if (link.endedAt) return sharedPages.endedEndedAt(link.endedAt, timeZone);
+  if (link.endedAt) return sharedPages.endedAt(link.endedAt, timeZone);
   if (!link.expiresAt) return sharedPages.untilSomebodyEndsIt;
   return `${link.state === 'expired' ? sharedPages.ranOutAfter : sharedPages.until} ${last(link.expiresAt)}`;
 };

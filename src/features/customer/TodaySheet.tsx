@@ -55,10 +55,10 @@ export function TodaySheet({ today, at, timeZone }: Props) {
                   {todaySheet.from}
                 </th>
                 <th scope="col" className="py-1 text-right font-medium">
-                  {todaySheet.madeKW}
+                  {todaySheet.madeKw}
                 </th>
                 <th scope="col" className="py-1 text-right font-medium">
-                  {todaySheet.clearDayKW}
+                  {todaySheet.clearDayKw}
                 </th>
               </tr>
             </thead>

@@ -53,7 +53,7 @@ export function yearCard(year: CustomerSite['year'], life: CustomerSite['life'])
   return {
     label: year.first.slice(0, 4),
     figure: energy(year.energy),
-    note: since > year.first ? customerCards.sinceSince(dayWords(since)) : customerCards.sinceTheFirstOf,
+    note: since > year.first ? customerCards.since(dayWords(since)) : customerCards.sinceTheFirstOf,
   };
 }
 
@@ -76,13 +76,13 @@ export function workingTimeCard(life: CustomerSite['life']): Card {
   const label = customerCards.workingTimeSinceThen;
   if (!life || life.workingTime === null) return { label, figure: '–', note: customerCards.noFullDayYet };
   const { lostMinutes: lost, lostMinutesGrid: grid } = life;
-  const gaps = life.completeness < 0.995 ? customerCards.readingsOfOfThe(life.completeness) : '';
+  const gaps = life.completeness < 0.995 ? customerCards.readingsAreMissing(life.completeness) : '';
   // rounded up, 99.97 % would read as if nothing had been lost
   const shown = lost > 0 ? Math.min(life.workingTime, 0.999) : life.workingTime;
   const note =
     lost === 0
       ? customerCards.noHourOfDaylight
-      : customerCards.lostLostGrid0(hours(lost), grid, lost, hours(grid));
+      : customerCards.lostOfItGrid(hours(lost), grid, lost, hours(grid));
   return { label, figure: percent(shown, 1), note: note + gaps };
 }
 

@@ -114,7 +114,7 @@ export function CurveSheet({ reading }: { reading: FormReading }) {
               label={
                 show === 'current'
                   ? curveSheet.currentOverVoltageRings(sweep)
-                  : curveSheet.powerOverVoltageUnder(main ? curveSheet.atSTC(main.pmp) : '')
+                  : curveSheet.powerOverVoltageUnder(main ? curveSheet.atStc(main.pmp) : '')
               }
             />
           </div>

@@ -66,7 +66,7 @@ export function EquipmentList({ catalogue, view: initialView, mayWrite, children
           mayWrite && (
             <>
               <ButtonLink weight="primary" href={paths.equipmentNew(family)}>
-                {equipmentListWords.enterFamilyFamily(family, ONE[family])}
+                {equipmentListWords.enterFamily(family, ONE[family])}
               </ButtonLink>
               <ButtonLink href={paths.equipmentImport(family)}>{equipmentListWords.importAFile}</ButtonLink>
             </>

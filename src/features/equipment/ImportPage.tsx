@@ -83,7 +83,7 @@ export function ImportPage({ family }: { family: EquipmentFamily }) {
     if (chosen.size > MOST_BYTES) {
       setState({
         step: 'failed',
-        message: importPage.hasKBImportAt(chosen.name, Math.ceil(chosen.size / 1000), MOST_BYTES),
+        message: importPage.hasKbImportAt(chosen.name, Math.ceil(chosen.size / 1000), MOST_BYTES),
       });
       return;
     }

@@ -122,7 +122,7 @@ export function PairForm({ connectors, onDone }: Props) {
           }}
         />
         <p id="evidence-hint" className="mt-1 text-sm text-ink-2">
-          {pairForm.aPDFOrA}
+          {pairForm.aPdfOr}
         </p>
       </div>
       {failed && (

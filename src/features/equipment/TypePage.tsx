@@ -119,7 +119,7 @@ const NEW_SENTENCE: Record<EquipmentFamily, string> = {
   modules: typePage.typeWhatTheDatasheet,
   units: typePage.chooseAKindIt,
   connectors: typePage.typeMakerAndType,
-  inverters: typePage.typeTheDCSide,
+  inverters: typePage.typeTheDcSide,
 };
 
 function sentenceOf(item: CatalogueItem, changed: string | null): ReactNode {

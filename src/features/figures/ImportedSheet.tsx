@@ -34,7 +34,7 @@ export function ImportedSheet({ days, label }: { days: SiteFigures['imported']; 
             {
               key: 'side',
               label: importedSheet.where,
-              cell: (d) => (d.side === 'ac' ? importedSheet.invertersAC : importedSheet.stringsDC),
+              cell: (d) => (d.side === 'ac' ? importedSheet.invertersAc : importedSheet.stringsDc),
             },
           ]}
         />

@@ -40,7 +40,7 @@ export function PricesSheet({ site, today, currency, prices, mayWrite }: Props) 
   return (
     <Sheet
       id="prices"
-      title={pricesSheet.priceOfAKWh}
+      title={pricesSheet.priceOfAkWh}
       aside={currency ?? pricesSheet.noCurrencySet}
       className="mt-5"
     >
@@ -52,7 +52,7 @@ export function PricesSheet({ site, today, currency, prices, mayWrite }: Props) 
           {prices.map((p) => (
             <li key={p.id} className="flex flex-wrap items-center justify-between gap-x-4">
               <span className="min-h-[44px] py-2.5">
-                {pricesSheet.fromFrom(p.from)}
+                {pricesSheet.fromWords(p.from)}
                 <strong className="tabular-nums">{written(p.priceKWh)}</strong>
                 {pricesSheet.setBy(currency, p.by)}
               </span>

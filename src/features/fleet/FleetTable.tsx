@@ -34,7 +34,7 @@ const columns = (now: Date): Column<FleetLine>[] => [
         <div className="mt-0.5 space-y-1.5 sm:hidden">
           <MixBar id={`narrow-${line.site.id}`} counts={line.site.counts} width={190} />
           <p className="text-sm text-ink-2">
-            {fleetTable.stageUnitsUnits(STAGE[line.site.stage], line.site.counts.units)}
+            {fleetTable.stageUnits(STAGE[line.site.stage], line.site.counts.units)}
           </p>
           <p className="text-sm">
             <Open line={line} now={now} />

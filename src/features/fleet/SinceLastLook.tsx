@@ -30,7 +30,7 @@ export function SinceLastLook({ missed, now, timeZone }: { missed: Missed; now: 
           type="button"
           className="target -my-2 px-1 font-medium text-petrol hover:underline"
           onClick={() => {
-            document.cookie = sinceLastLook.pathMaxAgeSamesite(SEEN_COOKIE, encodeURIComponent(missed.since));
+            document.cookie = `${SEEN_COOKIE}=${encodeURIComponent(missed.since)}; path=/; max-age=2592000; samesite=lax`;
             setSeen(true);
           }}
         >

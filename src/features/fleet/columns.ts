@@ -21,7 +21,7 @@ export const fleetColumns = (
   { header: fleetColumnsWords.notShuttingDown, value: ({ site }) => site.counts.notShuttingDown },
   { header: 'unconfirmed', value: ({ site }) => site.counts.unconfirmed },
   { header: 'open', value: ({ site, causes }) => openAt(site, causes, now, null) },
-  { header: fleetColumnsWords.inShutdownSinceUTC, value: ({ site }) => site.inShutdownSince },
+  { header: fleetColumnsWords.inShutdownSinceUtc, value: ({ site }) => site.inShutdownSince },
   {
     header: fleetColumnsWords.performanceRatio30D,
     value: ({ site }) =>
@@ -29,5 +29,5 @@ export const fleetColumns = (
   },
   { header: fleetColumnsWords.powerW, value: ({ site }) => site.power },
   { header: fleetColumnsWords.acCapacityW, value: ({ site }) => site.acPowerMax },
-  { header: fleetColumnsWords.newestReportUTC, value: ({ site }) => site.reportedAt },
+  { header: fleetColumnsWords.newestReportUtc, value: ({ site }) => site.reportedAt },
 ];

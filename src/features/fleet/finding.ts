@@ -34,7 +34,7 @@ function standing(sites: readonly SiteNow[], told: CauseNow['verdict'] | null): 
   ];
   if (stuck > 0)
     parts.push(
-      fleetFindingWords.stuckStuckStuckIn(
+      fleetFindingWords.stuckInShutdownAt(
         stuck,
         stuckAt.length,
         stuckAt[0]?.name,
@@ -42,8 +42,8 @@ function standing(sites: readonly SiteNow[], told: CauseNow['verdict'] | null): 
       ),
     );
   if (unconfirmed > 0) parts.push(fleetFindingWords.cantBeConfirmed(unconfirmed));
-  if (silent > 0) parts.push(fleetFindingWords.silentSilentSilent(silent));
-  if (unheard > 0) parts.push(fleetFindingWords.unheardUnheard(unheard));
+  if (silent > 0) parts.push(fleetFindingWords.areSilent(silent));
+  if (unheard > 0) parts.push(fleetFindingWords.unheard(unheard));
   if (dark > 0) parts.push(fleetFindingWords.inTheDark(dark));
   if (mute > 0) parts.push(fleetFindingWords.nothingThemselves(mute));
   const held = sites.filter((s) => s.inShutdownSince !== null);

@@ -87,12 +87,12 @@ export function openAt(
   if (counts.notShuttingDown > 0) parts.push(fleetNeed.didNotShutDown(counts.notShuttingDown));
   if (stringsLive > 0) parts.push(fleetNeed.stringsLive11String(stringsLive));
   if (counts.stuck > 0)
-    parts.push(fleetNeed.stuckStuckCauses(counts.stuck, behind(causes, 'stuck', counts.stuck)));
+    parts.push(fleetNeed.stuckCauses(counts.stuck, behind(causes, 'stuck', counts.stuck)));
   if (stringsStuck > 0) parts.push(fleetNeed.stringsStuck11String(stringsStuck));
-  if (counts.unconfirmed > 0) parts.push(fleetNeed.unconfirmedUnconfirmed(counts.unconfirmed));
+  if (counts.unconfirmed > 0) parts.push(fleetNeed.unconfirmed(counts.unconfirmed));
   if (counts.silent > 0)
-    parts.push(fleetNeed.silentSilentCauses(counts.silent, behind(causes, 'silent', counts.silent)));
-  if (counts.unheard > 0) parts.push(fleetNeed.unheardUnheard(counts.unheard));
+    parts.push(fleetNeed.silentCauses(counts.silent, behind(causes, 'silent', counts.silent)));
+  if (counts.unheard > 0) parts.push(fleetNeed.unheard(counts.unheard));
   if (!site.loggerConnected)
     parts.push(
       site.reportedAt

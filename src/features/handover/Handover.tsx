@@ -40,28 +40,26 @@ export function handoverFinding({ site, packs }: HandoverPage): { finding: strin
 }
 
 const size = (bytes: number): string =>
-  bytes < 1e6 ? handoverWords.maxKB(Math.max(1, bytes / 1000)) : handoverWords.bytesMB(bytes);
+  bytes < 1e6 ? handoverWords.maxKb(Math.max(1, bytes / 1000)) : handoverWords.bytesMb(bytes);
 
 function Pack({ pack, page }: { pack: PackItem; page: HandoverPage }) {
   return (
     <li className="grid gap-x-6 gap-y-2 border-b border-rule-faint py-3 last:border-b-0 sm:grid-cols-[minmax(0,1fr)_auto]">
       <div className="min-w-0">
-        <p className="font-semibold">{handoverWords.versionVersion(pack.version)}</p>
+        <p className="font-semibold">{handoverWords.version(pack.version)}</p>
         <p className="text-sm text-ink-2">
           {pack.madeBy}, <SiteTime at={pack.madeAt} now={page.at} timeZone={page.site.timeZone} zone />
           {pack.openPoints > 0 && handoverWords.openPoints(pack.openPoints)}
         </p>
         {pack.remark && <p className="mt-1">{pack.remark}</p>}
-        <p className="mt-1 break-all text-sm text-ink-2">
-          {handoverWords.fingerprintFingerprint(pack.fingerprint)}
-        </p>
+        <p className="mt-1 break-all text-sm text-ink-2">{handoverWords.fingerprint(pack.fingerprint)}</p>
       </div>
       <div className="flex flex-wrap content-start gap-2">
         <ButtonLink href={`${paths.api.paper(pack.ref)}?form=pdf`}>
-          {handoverWords.pdfPdfBytes(size(pack.pdfBytes))}
+          {handoverWords.pdfSize(size(pack.pdfBytes))}
         </ButtonLink>
         <ButtonLink href={`${paths.api.paper(pack.ref)}?form=csv`}>
-          {handoverWords.asBuiltCSV(size(pack.csvBytes))}
+          {handoverWords.asBuiltCsv(size(pack.csvBytes))}
         </ButtonLink>
       </div>
     </li>

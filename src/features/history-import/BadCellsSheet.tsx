@@ -34,7 +34,7 @@ export function BadCellsSheet({ checked, headers }: { checked: CheckedHistory; h
             key: 'column',
             label: badCellsSheet.column,
             from: 'sm',
-            cell: (f) => headers[f.column] ?? badCellsSheet.columnColumn(f.column),
+            cell: (f) => headers[f.column] ?? badCellsSheet.columnWords(f.column),
           },
           {
             key: 'cell',
@@ -48,7 +48,7 @@ export function BadCellsSheet({ checked, headers }: { checked: CheckedHistory; h
             cell: (f) => (
               <>
                 <span className="block text-sm text-ink-2 sm:hidden">
-                  {headers[f.column] ?? badCellsSheet.columnColumn(f.column)}
+                  {headers[f.column] ?? badCellsSheet.columnWords(f.column)}
                 </span>
                 <span className="font-medium text-rust-ink">{f.message}.</span>{' '}
                 <span className="text-ink-2">

@@ -21,7 +21,7 @@ export const STEP_WORDS: Record<HistoryStep, string> = {
 export function span(fromMs: number, toMs: number, timeZone: string): string {
   const from = longDate(fromMs, timeZone);
   const to = longDate(toMs, timeZone);
-  return from === to ? from : historyImportWords.fromToTo(from, to);
+  return from === to ? from : historyImportWords.fromTo(from, to);
 }
 
 export interface Standing {
@@ -40,7 +40,7 @@ export function finding({ imports, rows, layoutFault, checked, made, timeZone }:
 } {
   if (made)
     return {
-      heading: historyImportWords.readingsReadingsImported(made.readings),
+      heading: historyImportWords.readingsImported(made.readings),
       sentence: historyImportWords.spanListedSaidN5(
         span(Date.parse(made.from), Date.parse(made.to), timeZone),
         listed(made.of.slice(0, 5)),
@@ -57,7 +57,7 @@ export function finding({ imports, rows, layoutFault, checked, made, timeZone }:
               inForce.reduce((n, i) => n + i.readings, 0),
               inForce.length,
             ),
-      sentence: historyImportWords.chooseACSVOf,
+      sentence: historyImportWords.chooseAcsvOf,
     };
   }
   if (layoutFault) return { heading: historyImportWords.readTheirColumnsNeed(rows), sentence: layoutFault };

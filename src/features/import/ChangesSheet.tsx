@@ -76,7 +76,7 @@ export function ChangesSheet({ outcome, reason, onReason, reasonFault, busy, onI
       )}
       {leaving > 0 && (
         <div className="mt-4">
-          <Notice kind="stale" title={changesSheet.leavingLeavingSlot(leaving)}>
+          <Notice kind="stale" title={changesSheet.leavingSlot(leaving)}>
             {changesSheet.compareWithTheRoof}
           </Notice>
         </div>
@@ -92,7 +92,7 @@ export function ChangesSheet({ outcome, reason, onReason, reasonFault, busy, onI
           error={reasonFault}
         />
         <Button weight="primary" disabled={busy} onClick={onImport} className="sm:mb-6">
-          {changesSheet.importRowsRows(outcome.rows)}
+          {changesSheet.importRows(outcome.rows)}
         </Button>
       </div>
     </Sheet>

@@ -109,7 +109,7 @@ export function DecisionsSheet({ site, names, checked, choices, onChoices }: Pro
                     })),
                   ]}
                   onChange={(ours) => setMeaning(column, text, ours)}
-                  hint={decisionsSheet.inRowsRows(rows)}
+                  hint={decisionsSheet.inRows(rows)}
                 />
               ))}
             </div>

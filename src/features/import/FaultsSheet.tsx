@@ -62,7 +62,7 @@ export function FaultsSheet({ faults, count, texts, edits, onEdit, by }: Props) 
           className="target px-1 text-petrol hover:underline"
           onClick={() => saveCsv(faults, texts)}
         >
-          {faultsSheet.asCSV}
+          {faultsSheet.asCsv}
         </button>
       }
     >
@@ -124,11 +124,11 @@ interface RowProps {
 function FaultRow({ fault, text, edited, onEdit }: RowProps) {
   const [typed, setTyped] = useState<string | null>(null);
   const value = typed ?? text;
-  const where = faultsSheet.rowRowColumn(fault.row, COLUMN_LABELS[fault.column]);
+  const where = faultsSheet.rowColumn(fault.row, COLUMN_LABELS[fault.column]);
   return (
     <li className="grid gap-x-4 gap-y-1 py-3 md:grid-cols-[150px_minmax(180px,260px)_1fr] md:items-start">
       <p className="text-[15px]">
-        <span className="font-semibold">{faultsSheet.rowRow(fault.row)}</span>
+        <span className="font-semibold">{faultsSheet.row(fault.row)}</span>
         <br className="hidden md:inline" />
         <span className="text-ink-2 md:hidden">, </span>
         <span className="text-ink-2">{COLUMN_LABELS[fault.column]}</span>

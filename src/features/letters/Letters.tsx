@@ -15,7 +15,7 @@ export function lettersFinding({ letters, sending, localPost }: LettersPage): {
   if (!sending && waiting > 0)
     return {
       finding: lettersWords.noMailServerIs(waiting),
-      sentence: lettersWords.setSMTPURLWhat,
+      sentence: lettersWords.setTheMailServer,
     };
   if (lost > 0)
     return {

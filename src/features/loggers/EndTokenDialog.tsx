@@ -33,7 +33,7 @@ export function EndTokenDialog({ site, logger, token, operating, onClose }: Prop
   );
   const others = logger.tokens.filter((t) => t.state !== 'ended' && t.id !== token.id).length;
   return (
-    <Dialog open title={endTokenDialog.endTokenTokenThis(token.name)} onClose={onClose}>
+    <Dialog open title={endTokenDialog.endTokenThis(token.name)} onClose={onClose}>
       <form
         className="grid gap-4"
         onSubmit={(event) => {

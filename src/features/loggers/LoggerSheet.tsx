@@ -38,7 +38,7 @@ export function LoggerSheet({ logger, now, timeZone, mayManage, onNew, onEnd }: 
         {loggerSheet.lastSpoke}
         {at(logger.lastSpokeAt)}
         {logger.lastAddress && <>{loggerSheet.fromLastAddress(logger.lastAddress)}</>}
-        {logger.firmware && <>{loggerSheet.firmwareFirmware(logger.firmware)}</>}.
+        {logger.firmware && <>{loggerSheet.firmware(logger.firmware)}</>}.
       </p>
       <div className="mb-2 flex flex-wrap items-center justify-between gap-2">
         <h3 className="text-[15px]">{loggerSheet.tokens}</h3>

@@ -115,7 +115,7 @@ export function SuspectsSheet(props: Props) {
           download
           className="text-petrol hover:underline"
         >
-          {suspectsSheet.everyUnitAsCSV}
+          {suspectsSheet.everyUnitAsCsv}
         </a>
       }
     >

@@ -48,7 +48,7 @@ function currentWords(page: MembershipPage): Said {
   if (first) {
     const [a, b] = first;
     const heading = b
-      ? membershipWordsWords.aAndBA(unitName(a), unitName(b), a.outcome, b.outcome, groups.length)
+      ? membershipWordsWords.aAndBa(unitName(a), unitName(b), a.outcome, b.outcome, groups.length)
       : groups.length === 1
         ? a.otherString
           ? membershipWordsWords.carriesTheCurrentOf(unitName(a), a.otherString)

@@ -44,7 +44,7 @@ export const OUTPUT_NOTES: readonly Note[] = [
       },
     ],
     where: notesOutput.andAtLeastBelow(LOSS_MIN, SUN_ENOUGH),
-    sources: [notesOutput.iglewiczHoaglin(Z_LIMIT), notesOutput.betweenStringsIEC(LOSS_MIN)],
+    sources: [notesOutput.iglewiczHoaglin(Z_LIMIT), notesOutput.betweenStringsIec(LOSS_MIN)],
     limits: [
       notesOutput.fewerThanStringsIn(SIBLINGS_MIN),
       notesOutput.whereStringsShareAn,
@@ -80,7 +80,7 @@ export const OUTPUT_NOTES: readonly Note[] = [
         ),
       },
     ],
-    where: notesOutput.isMADOverThe(HELD_BELOW, MOSTLY),
+    where: notesOutput.isMadOverThe(HELD_BELOW, MOSTLY),
     sources: [
       notesOutput.robustStandardDeviationsIglewicz(DEVIATIONS_UNIT, LOSS_MIN_UNIT),
       notesOutput.halfAVoltAcross,
@@ -173,7 +173,7 @@ export const OUTPUT_NOTES: readonly Note[] = [
         ),
       },
     ],
-    sources: [notesOutput.withinNECAndLater(OUTSIDE_ARRAY_LIMIT_V, timeLimitS)],
+    sources: [notesOutput.withinNecAndLater(OUTSIDE_ARRAY_LIMIT_V, timeLimitS)],
     limits: [
       notesOutput.aResultSpeaksOf,
       notesOutput.withoutLightThatPowers,

@@ -46,7 +46,7 @@ function Work({
           {plannedWorksWords.enteredBy(
             work.strings === null
               ? plannedWorksWords.theWholeSite2
-              : plannedWorksWords.stringsStrings(work.strings.join(', ')),
+              : plannedWorksWords.strings(work.strings.join(', ')),
             work.by,
           )}
           {work.endedBy && plannedWorksWords.endedEarlyBy(work.endedBy)}

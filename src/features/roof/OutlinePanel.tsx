@@ -62,7 +62,7 @@ export function OutlinePanel({ outline, onOutline }: Props) {
                 {([0, 1] as const).map((axis) => (
                   <td key={axis} className="py-0.5 pr-2">
                     <MetresInput
-                      label={outlinePanel.pointII(i, axis)}
+                      label={outlinePanel.pointIi(i, axis)}
                       value={point[axis]}
                       onValue={(v) =>
                         onOutline(

@@ -21,7 +21,7 @@ export function PositionStrip({ string, position, onGo }: Props) {
               <button
                 type="button"
                 aria-current={here ? 'step' : undefined}
-                aria-label={positionStrip.positionPositionSerial(slot.position, slot.serial)}
+                aria-label={positionStrip.positionSerial(slot.position, slot.serial)}
                 title={slot.serial ?? positionStrip.noSerialYet}
                 onClick={() => onGo(slot.position)}
                 className={`min-h-[44px] min-w-[44px] rounded border text-[15px] font-medium ${filled ? 'border-ink bg-ink text-sheet' : 'border-dashed border-ink-3 bg-sheet text-ink-2'} ${here ? 'outline outline-[3px] outline-offset-1 outline-petrol' : ''}`}

@@ -165,7 +165,7 @@ export function Serials({ initial, person, string: first }: Props) {
         <Sheet
           id="read"
           title={<>{serials.serialAtPosition(string.name, position)}</>}
-          aside={now ? serials.nowNow(now) : serials.empty}
+          aside={now ? serials.now(now) : serials.empty}
         >
           {camera && <Camera onCode={onCode} onClose={() => setCamera(false)} />}
           <form

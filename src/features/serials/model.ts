@@ -127,7 +127,7 @@ export function judge(
     return {
       kind: 'elsewhere',
       serial,
-      place: serialsModel.whichPositionPosition(other.string.name, other.position),
+      place: serialsModel.whichPosition(other.string.name, other.position),
     };
   if (now !== null) return { kind: 'occupied', serial, now };
   return { kind: 'keep', serial };

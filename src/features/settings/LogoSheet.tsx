@@ -65,7 +65,7 @@ export function LogoSheet({ settings, mayWrite, onSaved }: Props) {
         </div>
       )}
       <p className="mt-2 text-sm text-ink-2">
-        {logoSheet.pngJPEGOrWebP}
+        {logoSheet.pngJpegOrWebP}
         {share !== null && logoSheet.roundSent(Math.round(share * 100))}
       </p>
       {error('body') && (

@@ -52,9 +52,7 @@ export function ThresholdsSheet({ settings, mayWrite, onSaved }: Props) {
               value={typed[t.key] ?? ''}
               onChange={(event) => setTyped({ ...typed, [t.key]: event.target.value })}
               error={error(t.key)}
-              hint={
-                <>{thresholdsSheet.changesDefaultDefaultWordsSource(t.changes, t.defaultWords, t.source)}</>
-              }
+              hint={<>{thresholdsSheet.changesDefaultAndSource(t.changes, t.defaultWords, t.source)}</>}
             />
           ))}
         </fieldset>

@@ -152,7 +152,7 @@ function Whole({ report, record: signed }: { report: ShutdownTestReport; record:
             <dl className="mt-2 grid gap-x-6 sm:grid-cols-2">
               <Fact name="Command, as the logger reported it">
                 {seen?.command
-                  ? `${clockSeconds(seen.command.since, site.timeZone)}, ${seen.command.where}${seen.command.by ? shutdownTestReportReport.byBy(seen.command.by) : ''}`
+                  ? `${clockSeconds(seen.command.since, site.timeZone)}, ${seen.command.where}${seen.command.by ? shutdownTestReportReport.by(seen.command.by) : ''}`
                   : shutdownTestReportReport.notReported}
               </Fact>
               <Fact name="Command, as a person noted it">
@@ -301,7 +301,7 @@ function Earlier({ report: { earlier, site } }: { report: ShutdownTestReport }) 
           {earlier.readings.map((r) => (
             <li key={r.string} className="border-b border-rule-faint py-1 last:border-b-0">
               <strong className="font-semibold">{r.string}</strong>
-              {shutdownTestReportReport.toToEarthTo(r.volts[0], r.volts[1], r.volts[2])}
+              {shutdownTestReportReport.plusMinusAndEarth(r.volts[0], r.volts[1], r.volts[2])}
               {r.afterS !== null && shutdownTestReportReport.afterTheCommand(Math.round(r.afterS))}
             </li>
           ))}

@@ -116,7 +116,7 @@ export function Results({ verdict, siteId, timeZone }: Props) {
                 s.rounds.length > 1 && (
                   <ul className="mt-1 text-sm text-ink-2">
                     {s.rounds.map((r) => (
-                      <li key={r.round}>{results.roundRoundWords(r.round, r.words)}</li>
+                      <li key={r.round}>{results.roundWords(r.round, r.words)}</li>
                     ))}
                   </ul>
                 )

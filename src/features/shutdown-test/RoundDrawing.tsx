@@ -64,13 +64,13 @@ export function RoundDrawing({ facts, strings, round, seen, limits }: Props) {
                 <td className="py-1 pr-3 font-semibold">{s.part.name}</td>
                 <td className="py-1 pr-3">
                   {s.newest
-                    ? roundDrawing.nAfterAfterSS(s.newest.volts, Math.round(s.newest.afterS))
+                    ? roundDrawing.afterSeconds(s.newest.volts, Math.round(s.newest.afterS))
                     : roundDrawing.notKnown}
                 </td>
                 <td className="py-1 pr-3">
                   {s.underFromS === null
                     ? roundDrawing.notUnder(s.limitV)
-                    : roundDrawing.limitVVAfterUnderFromS(s.limitV, Math.ceil(s.underFromS))}
+                    : roundDrawing.limitVvAfterUnderFromS(s.limitV, Math.ceil(s.underFromS))}
                 </td>
                 <td className="py-1 text-ink-2">{s.source}</td>
               </tr>

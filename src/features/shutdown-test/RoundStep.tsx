@@ -127,7 +127,7 @@ export function RoundStep({ test, index, mayWrite, onEnded }: Props) {
                     <>
                       {roundStep.whenToOfEach}
                       <strong className="font-semibold">{record.plan?.operator}</strong>
-                      {roundStep.operatesWhatPlacePlace(what, facts.initiator.place)}
+                      {roundStep.operatesWhatPlace(what, facts.initiator.place)}
                     </>
                   ) : (
                     <>{roundStep.personTakesOffBy(what)}</>
@@ -182,7 +182,7 @@ export function RoundStep({ test, index, mayWrite, onEnded }: Props) {
       <Sheet
         id="strings"
         title={originS === null ? roundStep.beforeTheCommand : roundStep.homeRunsAtThe}
-        aside={roundStep.stringsStrings(strings.length)}
+        aside={roundStep.strings(strings.length)}
       >
         <StringRows
           strings={strings}

@@ -30,18 +30,18 @@ function Now({ s, timeLimitS, sinceS }: { s: StringNow; timeLimitS: number; sinc
     <span className="inline-flex flex-wrap items-center gap-x-2">
       <span className="tabular-nums">
         <span className="text-[17px] font-semibold">{volts(s.newest.volts)}</span>{' '}
-        <span className="text-sm text-ink-2">{stringRows.atAfterSS(Math.round(s.newest.afterS))}</span>
+        <span className="text-sm text-ink-2">{stringRows.atAfterSs(Math.round(s.newest.afterS))}</span>
       </span>
       {s.underFromS !== null ? (
         <Tag tone="plum" shape="▁">
-          {stringRows.limitVVOrLess(s.limitV, s.underFromS, Math.ceil(s.underFromS))}
+          {stringRows.limitVvOrLess(s.limitV, s.underFromS, Math.ceil(s.underFromS))}
         </Tag>
       ) : over && late && !input ? (
         <Tag tone="crimson" shape="▲">
           {stringRows.overPast(s.limitV, timeLimitS)}
         </Tag>
       ) : (
-        <Tag tone="outline">{stringRows.overLimitVV(s.limitV)}</Tag>
+        <Tag tone="outline">{stringRows.overLimitVv(s.limitV)}</Tag>
       )}
     </span>
   );

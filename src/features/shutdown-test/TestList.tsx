@@ -67,7 +67,7 @@ export function TestList({ list, view: initial, mayRun }: Props) {
       from: 'md',
       cell: (t) =>
         t.state === 'signed'
-          ? `${testList.countedStringsString(t.strings)}${t.failed > 0 ? testList.failedFailed(t.failed) : ''}${t.carried > 0 ? testList.fromAnEarlierTest(t.carried) : ''}`
+          ? `${testList.countedStringsString(t.strings)}${t.failed > 0 ? testList.failed(t.failed) : ''}${t.carried > 0 ? testList.fromAnEarlierTest(t.carried) : ''}`
           : t.reason,
     },
     { key: 'by', label: testList.signedOrStartedBy, sortable: true, from: 'sm', cell: (t) => t.by },
@@ -101,7 +101,7 @@ export function TestList({ list, view: initial, mayRun }: Props) {
           flush
           aside={
             <ButtonLink href={withQuery(paths.api.shutdownTestsCsv(site.id), { ...view })} download>
-              {testList.testsAsCSV}
+              {testList.testsAsCsv}
             </ButtonLink>
           }
         >

@@ -84,7 +84,7 @@ export function stepWords(
   if (!round.released)
     return {
       heading: shutdownTestWords.wasOperatedReadThe(round.transmitter, facts.initiator.name, name),
-      sentence: shutdownTestWords.toToEarthAnd(verdict.limits.afterS),
+      sentence: shutdownTestWords.plusMinusAndEarth(verdict.limits.afterS),
     };
   return {
     heading: shutdownTestWords.releasedWatchComeBack(zone),

@@ -9,7 +9,7 @@ export const SHUTDOWN_COLUMNS: { header: string; value: (row: ShutdownRow) => st
   { header: 'string', value: ({ unit }) => unit?.stringName ?? null },
   { header: 'position', value: ({ unit }) => unit?.position ?? null },
   { header: 'serial', value: ({ unit }) => unit?.serial ?? null },
-  { header: shutdownColumns.sinceUTC, value: ({ cause, unit }) => unit?.since ?? cause.since },
+  { header: shutdownColumns.sinceUtc, value: ({ cause, unit }) => unit?.since ?? cause.since },
   {
     header: shutdownColumns.sharedPart,
     value: ({ cause }) => (cause.sharedPart ? partInWords(cause.sharedPart) : null),

@@ -61,7 +61,7 @@ export function InvertersSheet({ inverters, now, timeZone, zone }: Props) {
               {inverter.powerLimit !== null &&
                 inverter.powerLimit < inverter.acPowerMax &&
                 invertersSheet.limitedTo(inverter.powerLimit)}
-              {invertersSheet.insulationInsulation(insulation(inverter.insulation))}
+              {invertersSheet.insulation(insulation(inverter.insulation))}
               {inverter.at ? (
                 <SiteTime at={inverter.at} now={now} timeZone={timeZone} zone={zone} />
               ) : (

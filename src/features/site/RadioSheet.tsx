@@ -36,7 +36,7 @@ export function RadioSheet({ page, now, zone }: { page: SitePage; now: string; z
           <li key={logger.serial} className={line}>
             <span className="font-semibold">{radioSheet.loggerSerial(logger.serial)}</span>
             <span className="text-sm text-ink-2">
-              {logger.firmware && radioSheet.firmwareFirmware(logger.firmware)}
+              {logger.firmware && radioSheet.firmware(logger.firmware)}
               {radioSheet.lastSpoke}
               {at(logger.lastSpokeAt)}
             </span>

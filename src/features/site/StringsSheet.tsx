@@ -25,7 +25,7 @@ function Open({ string }: { string: StringNow }) {
       )}
       {counts.stuck > 0 && (
         <Tag tone="rust" shape="▼">
-          {stringsSheet.stuckStuck(counts.stuck)}
+          {stringsSheet.stuck(counts.stuck)}
         </Tag>
       )}
       {finding?.kind === 'stuck_positions_unknown' && (
@@ -40,7 +40,7 @@ function Open({ string }: { string: StringNow }) {
       )}
       {counts.unconfirmed > 0 && (
         <Tag tone="slate" shape="?">
-          {stringsSheet.unconfirmedUnconfirmed(counts.unconfirmed)}
+          {stringsSheet.unconfirmed(counts.unconfirmed)}
         </Tag>
       )}
     </span>
@@ -148,7 +148,7 @@ const columnsFor = (site: string): Column<StringNow>[] => [
       return weakest ? (
         <>
           {decibelMilliwatts(weakest.signal)}
-          <span className="block text-xs text-ink-2">{stringsSheet.positionPosition(weakest.position)}</span>
+          <span className="block text-xs text-ink-2">{stringsSheet.position(weakest.position)}</span>
         </>
       ) : (
         '–'

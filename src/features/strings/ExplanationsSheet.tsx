@@ -74,11 +74,7 @@ export default function ExplanationsSheet({ page, view }: { page: StringPage; vi
     <Sheet
       id="explanations"
       title={explanationsSheet.whichExplanationFits}
-      aside={
-        data?.day
-          ? explanationsSheet.judgedAfterShortDateDay(data.day)
-          : data && explanationsSheet.noNightJudgedYet
-      }
+      aside={data?.day ? explanationsSheet.judgedAfter(data.day) : data && explanationsSheet.noNightJudgedYet}
     >
       <NotRead
         error={found.error}

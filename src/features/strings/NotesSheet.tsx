@@ -186,7 +186,7 @@ export default function NotesSheet({ page, atS, onMoment }: Props) {
                 onClick={() => onMoment(Math.floor(Date.parse(note.from) / 1000))}
               >
                 {clockOrDate(note.from, page.at, site.timeZone)}
-                {note.to && notesSheet.toTo(note.to, page.at, site.timeZone)}
+                {note.to && notesSheet.to(note.to, page.at, site.timeZone)}
               </button>
               <span>{note.string ? notesSheet.stringWhich(note.string.name) : notesSheet.wholeSite}</span>
               <span title={fullTime(note.at, site.timeZone)}>

@@ -82,7 +82,7 @@ export function readingsOf(page: StringPage, finding: Finding): Readings {
           title: string.finding ? upper(string.finding.words) : finding.heading,
           confidence: f?.confidence ?? null,
           text: f
-            ? stringsAdvice.measuredMeasuredVExpectedVNull(f.measuredV, f.expectedV, f.thresholdV, f.scope)
+            ? stringsAdvice.measuredBesideExpected(f.measuredV, f.expectedV, f.thresholdV, f.scope)
             : '',
           tone: finding.kind === 'not_shutting_down' ? 'crimson' : 'rust',
         },

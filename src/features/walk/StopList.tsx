@@ -131,7 +131,7 @@ export function StopList({ page, stops, leftOut, ticks, onTick, onLeaveOut, onPu
                 stops.length,
               )}
               <a href={paths.api.walkCsv(page.site.id)} download className="text-petrol underline">
-                {stopList.allAsCSV}
+                {stopList.allAsCsv}
               </a>
             </>
           )

@@ -66,7 +66,7 @@ export function DeliveryList({ deliveries, at, timeZone, busy, onResend }: Props
                 {d.attempts.map((a) => (
                   <li key={a.at}>
                     <SiteTime at={a.at} now={at} timeZone={timeZone} />
-                    {deliveryList.statusLatencyMsMs(a.status, a.latencyMs)}
+                    {deliveryList.statusAndLatency(a.status, a.latencyMs)}
                     {a.excerpt && (
                       <code className="block whitespace-pre-wrap break-all text-ink-2">{a.excerpt}</code>
                     )}

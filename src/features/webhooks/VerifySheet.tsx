@@ -6,7 +6,7 @@ import { verifySheet } from '../../words/webhooks';
 const HEADERS: readonly (readonly [string, string])[] = [
   ['Wakeline-Delivery', verifySheet.namesTheCallThe],
   ['Wakeline-Time', verifySheet.whenItWasSigned],
-  ['Wakeline-Signature', verifySheet.sha256AndTheHMAC],
+  ['Wakeline-Signature', verifySheet.sha256AndHmac],
 ];
 
 /** What a receiver has to know. */

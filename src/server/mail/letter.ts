@@ -51,7 +51,7 @@ function textOf(parts: LetterParts): string {
   const { greeting, finding, paragraphs, caution, picture, action, figures = [], sections = [] } = parts;
   const { footer, wayOut } = parts;
   const blocks = [
-    ...(finding ? [parts.hazard ? lettersSentLetter.notSHUTTINGDOWN(finding) : finding] : []),
+    ...(finding ? [parts.hazard ? lettersSentLetter.notShuttingDown(finding) : finding] : []),
     greeting,
     ...paragraphs,
     ...(parts.call ? [`${parts.call.words}: ${parts.call.number}`] : []),

@@ -141,7 +141,7 @@ export function gatheredWords(
       : '';
   const finding =
     todo.length > 0
-      ? noticeDigest.todoTodoToDo(todo.length, lossWh, amount)
+      ? noticeDigest.thingsToDo(todo.length, lossWh, amount)
       : over.length > 0 && other.length === 0
         ? noticeDigest.nothingHasToBe(over.length)
         : noticeDigest.nothingHasToBeDone(kept.length);

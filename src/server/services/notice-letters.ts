@@ -235,7 +235,7 @@ export async function writeLetter(
     kind: told.kind,
     eventKey,
     to: { address: person.email, name: person.name },
-    subject: `${urgent ? noticeLetters.notSHUTTINGDOWN : ''}${event.site.name}: ${words.headline}`,
+    subject: `${urgent ? noticeLetters.notShuttingDown : ''}${event.site.name}: ${words.headline}`,
     text,
     html,
     pictureId: picture?.id ?? null,

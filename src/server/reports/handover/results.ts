@@ -84,7 +84,7 @@ function readings(paper: Paper, data: PackData): void {
         STAGES[group[0]?.stage ?? ''] ?? '',
         volts(main?.voltage),
         finding?.expectedLowV != null && finding.expectedHighV != null
-          ? papersHandoverResults.expectedLowVToExpectedHighVV(finding.expectedLowV, finding.expectedHighV)
+          ? papersHandoverResults.expectedLowVToExpectedHighVv(finding.expectedLowV, finding.expectedHighV)
           : '',
         volts(positive?.voltage),
         volts(negative?.voltage),

@@ -10,7 +10,7 @@ import { papersHandoverSections } from '../../../words/papers-handover';
 export const RULE_SETS: Record<string, string> = {
   rapid_shutdown_30s: papersHandoverSections.rapidShutdown30S,
   rapid_shutdown_10s: papersHandoverSections.rapidShutdown10S,
-  hazard_control: papersHandoverSections.aListedPVHazard,
+  hazard_control: papersHandoverSections.aListedPvHazard,
   none: 'none',
 };
 const STRUCTURES: Record<string, string> = {
@@ -63,7 +63,7 @@ export function systemData(paper: Paper, data: PackData): void {
     [papersHandoverSections.strings, number(data.strings.length)],
     [
       papersHandoverSections.inverters,
-      papersHandoverSections.invertersReduceAC(
+      papersHandoverSections.invertersReduceAc(
         data.inverters.length,
         data.inverters.reduce((n, i) => n + i.acPowerMax, 0),
       ),
@@ -132,7 +132,7 @@ export function singleLine(paper: Paper, data: PackData): void {
         .stroke();
       paper.setAt(inverter.name, x + 8, y + 10, box.width - 16, { size: 9.5, weight: 600 });
       paper.setAt(
-        [inverter.type ?? '', papersHandoverSections.acPowerMaxAC(inverter.acPowerMax)]
+        [inverter.type ?? '', papersHandoverSections.acPowerMaxAc(inverter.acPowerMax)]
           .filter(Boolean)
           .join('\n'),
         x + 8,
@@ -149,7 +149,7 @@ export function singleLine(paper: Paper, data: PackData): void {
           .strokeColor(PAPER.ink)
           .stroke();
         pen.circle(x + box.width + 56, at, 2.2).fill(PAPER.ink);
-        paper.setAt(papersHandoverSections.inputInput(input.number), x + box.width + 6, at - 11, 50, {
+        paper.setAt(papersHandoverSections.input(input.number), x + box.width + 6, at - 11, 50, {
           size: 7.5,
           colour: PAPER.ink2,
         });
@@ -170,7 +170,7 @@ export function singleLine(paper: Paper, data: PackData): void {
         });
     });
     if (spare > 0 && rows.length > 0)
-      paper.text(papersHandoverSections.inverterSpareSpareFree(inverter.name, spare), {
+      paper.text(papersHandoverSections.inverterSpareFree(inverter.name, spare), {
         size: 8.5,
         colour: PAPER.ink2,
       });
@@ -284,11 +284,11 @@ export function layout(paper: Paper, data: PackData): void {
     paper.heading(s.name, 2);
     const facts = [
       papersHandoverSections.slotsUnitsKindUnitType(s.slots.length, kindWords(s.kind), s.unitType),
-      papersHandoverSections.planePlane(s.plane),
-      papersHandoverSections.inverterInputInput(s.inverter, s.input),
-      papersHandoverSections.zoneZone(s.zone),
+      papersHandoverSections.planeWords(s.plane),
+      papersHandoverSections.inverterInput(s.inverter, s.input),
+      papersHandoverSections.zoneWords(s.zone),
       s.transmitters.length > 0 ? papersHandoverSections.hearsTransmitters(s.transmitters.join(', ')) : '',
-      s.logger ? papersHandoverSections.loggerLogger(s.logger) : '',
+      s.logger ? papersHandoverSections.loggerWords(s.logger) : '',
       s.leavesArray ? papersHandoverSections.homeRunLeavesThe : papersHandoverSections.homeRunStaysInside,
     ];
     paper.text(facts.filter(Boolean).join(' · '), { size: 8.5, colour: PAPER.ink2 });
