@@ -3,6 +3,7 @@ import { config } from '../config';
 import { connect } from '../db/pools';
 import { VALUE_COLUMNS } from '../queries/frames';
 import {
+  allowLongCounts,
   beginPacking,
   daysToPack,
   finishPacking,
@@ -18,8 +19,6 @@ import { unpackValues } from '../queries/packed-values';
 const DAY_MS = 86_400_000;
 /** Strings that are read and written at a time: some tens of thousands of frames in memory. */
 const STRINGS_A_TIME = 20;
-/** Counting a day of a large fleet takes longer than other statements may. */
-const COUNT_TIMEOUT_MS = 600_000;
 
 /**
  * Packs every day that is older than the setting says. A day is closed first, so that later frames wait for the merge
@@ -30,7 +29,7 @@ export async function packDays(now: Date): Promise<{ days: number; frames: numbe
   const done = { days: 0, frames: 0 };
   const client = await connect('ingest');
   try {
-    await client.query(`set statement_timeout = ${COUNT_TIMEOUT_MS}`);
+    await allowLongCounts(client);
     const before = new Date(now.getTime() - config().PACKED_AFTER_DAYS * DAY_MS).toISOString().slice(0, 10);
     for (const day of await daysToPack(client, before)) {
       if (!(await beginPacking(client, day))) continue;

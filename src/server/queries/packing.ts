@@ -52,6 +52,11 @@ export async function beginPacking(client: pg.ClientBase, day: string): Promise<
   return rows[0]?.begun ?? false;
 }
 
+/** Counting a day of a large fleet takes longer than other statements may. */
+export async function allowLongCounts(client: pg.ClientBase): Promise<void> {
+  await client.query(`set statement_timeout = '10min'`);
+}
+
 /** Swaps the frames for the packed rows. Refused by the database where they are not as many. */
 export async function finishPacking(client: pg.ClientBase, day: string): Promise<number> {
   // the day is closed: this count holds. Without a lock: it takes a while
