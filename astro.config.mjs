@@ -18,7 +18,7 @@ export default defineConfig({
   // scripts are files: the browser runs no inline one but those that server/http/inline-scripts names
   vite: {
     plugins: [bundles(), language(process.env.WAKELINE_LANGUAGE)],
-    build: { assetsInlineLimit: 0, target: 'es2022', minify: 'terser' },
+    build: { assetsInlineLimit: 0, target: 'es2022' },
     ssr: { noExternal: ['echarts-for-react'] },
   },
 });

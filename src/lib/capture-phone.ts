@@ -1,5 +1,5 @@
 import type { CaptureSnapshot } from '../schemas/api/capture';
-import { PERSON_HEADER } from '../schemas/api/capture';
+import { PERSON_HEADER } from '../schemas/lists-and-limits';
 import type { CheckRecord } from '../schemas/api/checks';
 import type { ReadingRecord } from '../schemas/api/readings';
 import { paths } from '../schemas/paths';

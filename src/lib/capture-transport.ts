@@ -1,4 +1,4 @@
-import { PERSON_HEADER } from '../schemas/api/capture';
+import { PERSON_HEADER } from '../schemas/lists-and-limits';
 import { paths } from '../schemas/paths';
 import { api, ApiError, withQuery, type QueryValue } from './api';
 import type { Answer, Problem, Waiting } from './capture-queue';

@@ -1,4 +1,4 @@
-import { QueryClient } from '@tanstack/react-query';
+import { notifyManager, QueryClient } from '@tanstack/react-query';
 import { ApiError } from './api';
 
 /** Worth another try by itself: no answer, or a server that says so. A refusal stays a refusal. */
@@ -19,6 +19,18 @@ export function makeQueryClient(): QueryClient {
     },
   });
 }
+
+/** What changes in one go is told in one go: so ten changes of a page's data draw it once, not ten times. */
+let untold: (() => void)[] = [];
+notifyManager.setScheduler((tell) => {
+  untold.push(tell);
+  if (untold.length > 1) return;
+  setTimeout(() => {
+    const now = untold;
+    untold = [];
+    for (const one of now) one();
+  });
+});
 
 let ofThisPage: QueryClient | undefined;
 

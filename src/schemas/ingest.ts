@@ -1,5 +1,6 @@
 import { z } from 'zod';
 import { COMMANDS, INVERTER_STATUSES } from '../domain/verdicts/codes';
+import { BATCH_MESSAGES_MAX } from './lists-and-limits';
 
 /**
  * The wire protocol of /ingest/v1: WebSocket text frames, one JSON object each, columns not rows, integers
@@ -198,11 +199,6 @@ export type ServerMessage = z.infer<typeof serverMessage>;
 export type Roster = z.infer<typeof roster>;
 
 // ---- by HTTPS: POST /api/v1/ingest takes the messages above, and answers after COMMIT ----
-/** Bytes of a batch as it is sent, and unpacked. A JSON document may have no more than one message may. */
-export const BATCH_MAX_BYTES = 4 * 1024 * 1024;
-export const BATCH_UNPACKED_MAX_BYTES = 8 * 1024 * 1024;
-export const BATCH_MESSAGES_MAX = 2000;
-
 /** The body: one message, or a list of them; as NDJSON (application/x-ndjson) one message a line. */
 export const ingestMessage = z.union([loggerMessage, framesEnvelope]);
 export const ingestBatch = z.union([ingestMessage, z.array(ingestMessage).min(1).max(BATCH_MESSAGES_MAX)]);

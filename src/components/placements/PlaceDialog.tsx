@@ -1,4 +1,4 @@
-import { useMemo, useState, type SubmitEvent } from 'react';
+import { useMemo, useState, type FormEvent } from 'react';
 import { Dialog } from '../ui/Dialog';
 import { Field } from '../ui/Field';
 import type { PlaceSuggestion, Stranger } from '../../domain/commissioning/suggest';
@@ -93,7 +93,7 @@ export function PlaceDialog({ siteId, strings, answers, stranger, slot, onClose,
   const serial = stranger?.serial ?? typed.trim().toUpperCase();
   const old = seat?.slot.serial ?? null;
   const oldHeard = old !== null && heard.has(old);
-  const submit = (event: SubmitEvent) => {
+  const submit = (event: FormEvent) => {
     event.preventDefault();
     const missing = {
       ...confirmFaults(confirmed),

@@ -1,4 +1,4 @@
-import { useState, type SubmitEvent } from 'react';
+import { useState, type FormEvent } from 'react';
 import { Dialog } from '../ui/Dialog';
 import { amperes } from '../../drawings/numbers';
 import type { StringNow } from '../../schemas/api/now';
@@ -84,7 +84,7 @@ export function SwapDialog({ siteId, strings, first, second, onClose, onDone }: 
   const two = seatAt(strings, b);
   const both = one && two && slotFault(one, two) === null ? { one, two } : null;
   const moves = both && (both.one.slot.serial === null || both.two.slot.serial === null);
-  const submit = (event: SubmitEvent) => {
+  const submit = (event: FormEvent) => {
     event.preventDefault();
     const slots = slotFault(one, two);
     const missing = { ...confirmFaults(confirmed), ...(slots ? { slots } : {}) };

@@ -1,21 +1,24 @@
 import { useQuery } from '@tanstack/react-query';
-import { useEffect, useMemo, useState } from 'react';
+import { Suspense, useEffect, useMemo, useState } from 'react';
 import { ButtonLink } from '../../components/ui/Button';
 import { Heading } from '../../components/ui/Heading';
 import { NotRead } from '../../components/ui/NotRead';
+import { late } from '../../lib/late';
 import { queryClient } from '../../lib/query-client';
 import { useViewInUrl } from '../../lib/view-in-url';
 import type { AsBuilt, AsBuiltView, PartAdded } from '../../schemas/api/as-built';
 import { paths } from '../../schemas/paths';
 import { asBuiltFinding } from './finding';
-import { PartDialog, type Editing } from './PartDialog';
+import type { Editing } from './PartDialog';
 import { PartsSheets, SiteSheets } from './PartsSheets';
 import { asBuiltQuery } from './queries';
 import { EMPTY_DRAFT, isEmpty, type SlotsDraft } from './slots-draft';
-import { SlotsDialog } from './SlotsDialog';
 import { StringsSheet, VIEW_DEFAULTS } from './StringsSheet';
-import { TokenDialog } from './TokenDialog';
 import { asBuiltBoard } from '../../words/as-built';
+
+const TokenDialog = late(async () => (await import('./TokenDialog')).TokenDialog);
+const SlotsDialog = late(async () => (await import('./SlotsDialog')).SlotsDialog);
+const PartDialog = late(async () => (await import('./PartDialog')).PartDialog);
 
 interface Props {
   initial: AsBuilt;
@@ -117,38 +120,44 @@ export function AsBuiltBoard({ initial, view: initialView, mayWrite, timeZones }
         </div>
       </div>
       {open && !editing && (
-        <SlotsDialog
-          key={open.id}
-          built={built}
-          string={open}
-          draft={drafts[open.id] ?? EMPTY_DRAFT}
-          mayWrite={mayWrite}
-          onDraft={(draft) => setDrafts((old) => ({ ...old, [open.id]: draft }))}
-          onEditString={() => setEditing({ kind: 'string', id: open.id })}
-          onClose={() => change({ string: '' })}
-        />
+        <Suspense>
+          <SlotsDialog
+            key={open.id}
+            built={built}
+            string={open}
+            draft={drafts[open.id] ?? EMPTY_DRAFT}
+            mayWrite={mayWrite}
+            onDraft={(draft) => setDrafts((old) => ({ ...old, [open.id]: draft }))}
+            onEditString={() => setEditing({ kind: 'string', id: open.id })}
+            onClose={() => change({ string: '' })}
+          />
+        </Suspense>
       )}
       {editing && (
-        <PartDialog
-          key={`${editing.kind} ${editing.id ?? 'new'}`}
-          built={built}
-          editing={editing}
-          timeZones={timeZones}
-          onClose={() => setEditing(null)}
-          onSaved={saved}
-        />
+        <Suspense>
+          <PartDialog
+            key={`${editing.kind} ${editing.id ?? 'new'}`}
+            built={built}
+            editing={editing}
+            timeZones={timeZones}
+            onClose={() => setEditing(null)}
+            onSaved={saved}
+          />
+        </Suspense>
       )}
       {token && (
-        <TokenDialog
-          site={site}
-          logger={{
-            ...token.logger,
-            serial: built.loggers.find((l) => l.id === token.logger.id)?.serial ?? token.logger.serial,
-          }}
-          operating={built.site.stage === 'operating'}
-          token={token.token}
-          onClose={() => setToken(null)}
-        />
+        <Suspense>
+          <TokenDialog
+            site={site}
+            logger={{
+              ...token.logger,
+              serial: built.loggers.find((l) => l.id === token.logger.id)?.serial ?? token.logger.serial,
+            }}
+            operating={built.site.stage === 'operating'}
+            token={token.token}
+            onClose={() => setToken(null)}
+          />
+        </Suspense>
       )}
     </>
   );

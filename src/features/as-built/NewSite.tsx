@@ -1,5 +1,5 @@
 import { useMutation } from '@tanstack/react-query';
-import { useState, useSyncExternalStore, type SubmitEvent } from 'react';
+import { useState, useSyncExternalStore, type FormEvent } from 'react';
 import { Button, ButtonLink } from '../../components/ui/Button';
 import { Notice } from '../../components/ui/Notice';
 import { Sheet } from '../../components/ui/Sheet';
@@ -53,7 +53,7 @@ export function NewSite({ timeZones, timeZone, at }: Props) {
     },
     queryClient(),
   );
-  const submit = (event: SubmitEvent) => {
+  const submit = (event: FormEvent) => {
     event.preventDefault();
     const read = readForm('site', form);
     setFaults(read.faults ?? {});

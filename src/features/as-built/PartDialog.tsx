@@ -1,5 +1,5 @@
 import { useMutation } from '@tanstack/react-query';
-import { useState, type SubmitEvent } from 'react';
+import { useState, type FormEvent } from 'react';
 import { Button } from '../../components/ui/Button';
 import { Dialog } from '../../components/ui/Dialog';
 import { Field } from '../../components/ui/Field';
@@ -152,7 +152,7 @@ export function PartDialog({ built, editing, timeZones, onClose, onSaved }: Prop
     },
     client,
   );
-  const submit = (event: SubmitEvent) => {
+  const submit = (event: FormEvent) => {
     event.preventDefault();
     const read = readForm(kind, form);
     setFaults(read.faults ?? {});

@@ -1,5 +1,5 @@
 import { useMutation } from '@tanstack/react-query';
-import { useRef, useState, type KeyboardEvent, type SubmitEvent } from 'react';
+import { useRef, useState, type KeyboardEvent, type FormEvent } from 'react';
 import { Button, ButtonLink } from '../../components/ui/Button';
 import { Dialog } from '../../components/ui/Dialog';
 import { Field } from '../../components/ui/Field';
@@ -97,7 +97,7 @@ export function SlotsDialog({ built, string, draft, mayWrite, onDraft, onEditStr
     all('elsewhere');
   const gaps = gapsOf(string);
 
-  const submit = (event: SubmitEvent) => {
+  const submit = (event: FormEvent) => {
     event.preventDefault();
     save.mutate({});
   };

@@ -2,7 +2,7 @@ import { useEffect, useId, useState } from 'react';
 import type { CapturePhone } from '../../lib/capture-phone';
 import type { Waiting } from '../../lib/capture-queue';
 import { percent } from '../../drawings/numbers';
-import { PHOTO_TYPES } from '../../schemas/api/attachments';
+import { PHOTO_TYPES } from '../../schemas/lists-and-limits';
 import { capturePhotos } from '../../words/capture';
 
 interface ButtonProps {

@@ -7,7 +7,7 @@ import { listed } from '../../drawings/numbers';
 import { api, ApiError } from '../../lib/api';
 import { ofPerson } from '../../lib/capture-queue';
 import { newRef } from '../../lib/capture-records';
-import { PERSON_HEADER } from '../../schemas/api/capture';
+import { PERSON_HEADER } from '../../schemas/lists-and-limits';
 import { paths } from '../../schemas/paths';
 import type { ScreenProps } from './screen';
 import { signOffSheet } from '../../words/capture';

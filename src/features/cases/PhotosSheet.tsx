@@ -4,7 +4,7 @@ import { Sheet } from '../../components/ui/Sheet';
 import { fullTime } from '../../drawings/times';
 import { ApiError, withQuery } from '../../lib/api';
 import { uploadFile } from '../../lib/upload';
-import { PHOTO_TYPES } from '../../schemas/api/attachments';
+import { PHOTO_TYPES } from '../../schemas/lists-and-limits';
 import type { CasePage } from '../../schemas/api/cases';
 import { paths } from '../../schemas/paths';
 import type { CaseInHand } from './query';

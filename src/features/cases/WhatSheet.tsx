@@ -3,7 +3,7 @@ import { Button } from '../../components/ui/Button';
 import { Field } from '../../components/ui/Field';
 import { Sheet } from '../../components/ui/Sheet';
 import type { CasePage } from '../../schemas/api/cases';
-import { TITLE_MAX, WHAT_MAX } from '../../schemas/api/cases';
+import { TITLE_MAX, WHAT_MAX } from '../../schemas/lists-and-limits';
 import { paths } from '../../schemas/paths';
 import { PartsPicker } from './PartsPicker';
 import type { CaseInHand } from './query';

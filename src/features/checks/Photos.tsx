@@ -4,12 +4,8 @@ import { SiteTime } from '../../components/ui/Time';
 import { ApiError, withQuery } from '../../lib/api';
 import { newRef } from '../../lib/capture-records';
 import { uploadFile } from '../../lib/upload';
-import {
-  PHOTO_MAX_BYTES,
-  PHOTO_TYPES,
-  type AttachmentItem,
-  type AttachmentQuery,
-} from '../../schemas/api/attachments';
+import type { AttachmentItem, AttachmentQuery } from '../../schemas/api/attachments';
+import { PHOTO_MAX_BYTES, PHOTO_TYPES } from '../../schemas/lists-and-limits';
 import { paths } from '../../schemas/paths';
 import { checksPhotos } from '../../words/checks';
 

@@ -6,7 +6,7 @@ import { Notice } from '../../components/ui/Notice';
 import { Segmented } from '../../components/ui/Segmented';
 import { ApiError, api } from '../../lib/api';
 import { newRef } from '../../lib/capture-records';
-import { checkRecord, type CheckInput, type CheckRecord } from '../../schemas/api/checks';
+import type { CheckInput, CheckRecord } from '../../schemas/api/checks';
 import type { CaptureSnapshot } from '../../schemas/api/capture';
 import { paths } from '../../schemas/paths';
 import { FigureFields, type Typed } from './FigureFields';
@@ -70,6 +70,8 @@ export function RecordForm({ sheet, row, cell, onSaved, onCancel }: Props) {
     } catch (error) {
       if (!(error instanceof ApiError)) throw error;
       setRefused(error);
+      // schemas are heavy: they come when somebody was first
+      const { checkRecord } = await import('../../schemas/api/checks');
       setTheirs(checkRecord.safeParse(error.current).data ?? null);
       // an answer that never came may still have been heard: only a refusal makes a new record of it
       if (error.status === 422 || error.status === 409) ref.current = newRef();

@@ -1,7 +1,5 @@
-import { useCallback, useMemo, useRef, useState } from 'react';
+import { Suspense, useCallback, useMemo, useRef, useState } from 'react';
 import { useQuery } from '@tanstack/react-query';
-import { PlaceDialog } from '../../components/placements/PlaceDialog';
-import { SwapDialog } from '../../components/placements/SwapDialog';
 import type { SlotRef } from '../../components/placements/evidence';
 import { Steps } from '../../components/commissioning/Steps';
 import { Caution } from '../../components/ui/Caution';
@@ -10,6 +8,7 @@ import { LiveMark } from '../../components/ui/Live';
 import { NotRead } from '../../components/ui/NotRead';
 import { Notice } from '../../components/ui/Notice';
 import { useNow } from '../../components/ui/Time';
+import { late } from '../../lib/late';
 import { api } from '../../lib/api';
 import { useLive } from '../../lib/live-hook';
 import { Meanwhile } from '../../lib/meanwhile';
@@ -30,6 +29,9 @@ import { outlookOf } from './outlook';
 import { liveSteps, tallyOf } from './tally';
 import { rollCallWords } from './words';
 import { commissioningRollCall } from '../../words/commissioning';
+
+const SwapDialog = late(async () => (await import('../../components/placements/SwapDialog')).SwapDialog);
+const PlaceDialog = late(async () => (await import('../../components/placements/PlaceDialog')).PlaceDialog);
 
 interface Props {
   initial: RollCallPage;
@@ -164,25 +166,29 @@ export function RollCall({ initial, mayRun, mayPlace, view, typed }: Props) {
         </div>
       </div>
       {dialog?.kind === 'swap' && (
-        <SwapDialog
-          siteId={siteId}
-          strings={page.strings}
-          first={dialog.first}
-          second={dialog.second}
-          onClose={() => setDialog(null)}
-          onDone={written}
-        />
+        <Suspense>
+          <SwapDialog
+            siteId={siteId}
+            strings={page.strings}
+            first={dialog.first}
+            second={dialog.second}
+            onClose={() => setDialog(null)}
+            onDone={written}
+          />
+        </Suspense>
       )}
       {(dialog?.kind === 'place' || dialog?.kind === 'replace') && (
-        <PlaceDialog
-          siteId={siteId}
-          strings={page.strings}
-          answers={page.answers}
-          stranger={dialog.kind === 'place' ? dialog.stranger : null}
-          slot={dialog.kind === 'replace' ? dialog.slot : null}
-          onClose={() => setDialog(null)}
-          onDone={written}
-        />
+        <Suspense>
+          <PlaceDialog
+            siteId={siteId}
+            strings={page.strings}
+            answers={page.answers}
+            stranger={dialog.kind === 'place' ? dialog.stranger : null}
+            slot={dialog.kind === 'replace' ? dialog.slot : null}
+            onClose={() => setDialog(null)}
+            onDone={written}
+          />
+        </Suspense>
       )}
     </>
   );

@@ -1,4 +1,4 @@
-import { useState, type SubmitEvent } from 'react';
+import { useState, type FormEvent } from 'react';
 import { useMutation } from '@tanstack/react-query';
 import { Button } from '../../components/ui/Button';
 import { Field } from '../../components/ui/Field';
@@ -54,7 +54,7 @@ function Start({ page, onChanged, typed }: Pick<Props, 'page' | 'onChanged' | 't
     },
     queryClient(),
   );
-  const submit = (event: SubmitEvent) => {
+  const submit = (event: FormEvent) => {
     event.preventDefault();
     const faults = {
       name: personOnSite.trim().length < 2 ? runPanel.enterTheNameOf : undefined,

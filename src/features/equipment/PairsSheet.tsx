@@ -1,4 +1,4 @@
-import { useState } from 'react';
+import { Suspense, useState } from 'react';
 import { Button } from '../../components/ui/Button';
 import { Dialog } from '../../components/ui/Dialog';
 import { Notice } from '../../components/ui/Notice';
@@ -8,10 +8,12 @@ import { Tag } from '../../components/ui/Tag';
 import { CONNECTOR_CLAUSE } from '../../domain/equipment/connectors';
 import { fullTime } from '../../drawings/times';
 import { ApiError, api } from '../../lib/api';
+import { late } from '../../lib/late';
 import type { ConnectorItem, PairItem } from '../../schemas/api/equipment';
 import { paths } from '../../schemas/paths';
-import { PairForm } from './PairForm';
 import { pairsSheet } from '../../words/equipment';
+
+const PairForm = late(async () => (await import('./PairForm')).PairForm);
 
 interface Props {
   pairs: readonly PairItem[];
@@ -122,7 +124,9 @@ export function PairsSheet({ pairs, connectors, mayRecord, timeZone }: Props) {
         <p className="mt-3 text-sm text-ink-2">{pairsSheet.aManagerRecordsPairs}</p>
       )}
       <Dialog open={recording} title={pairsSheet.recordADocumentedPair} onClose={() => setRecording(false)}>
-        <PairForm connectors={connectors} onDone={() => window.location.reload()} />
+        <Suspense>
+          <PairForm connectors={connectors} onDone={() => window.location.reload()} />
+        </Suspense>
       </Dialog>
       <Dialog open={ending !== null} title={pairsSheet.endThisPair} onClose={() => setEnding(null)}>
         {ending && (

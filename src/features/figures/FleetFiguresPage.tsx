@@ -8,13 +8,13 @@ import { Table, type Column } from '../../components/ui/Table';
 import { energy, money, number, percent, quantity, UNKNOWN } from '../../drawings/numbers';
 import { withQuery } from '../../lib/api';
 import { useViewInUrl } from '../../lib/view-in-url';
-import {
-  fleetFiguresSorts,
-  type FleetFigures,
-  type FleetFiguresRow,
-  type FleetFiguresSort,
-  type FleetFiguresView,
+import type {
+  FleetFigures,
+  FleetFiguresRow,
+  FleetFiguresSort,
+  FleetFiguresView,
 } from '../../schemas/api/figures';
+import { fleetFiguresSorts } from '../../schemas/lists-and-limits';
 import { paths } from '../../schemas/paths';
 import { PeriodPicker } from './PeriodPicker';
 import { shownRows } from '../../schemas/api/figures-order';

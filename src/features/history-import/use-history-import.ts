@@ -2,11 +2,8 @@ import { useEffect, useRef, useState } from 'react';
 import type { Separator } from '../../components/table-file/separators';
 import { layoutFault, type Layout } from '../../domain/history-import/layout';
 import { ApiError } from '../../lib/api';
-import {
-  HISTORY_FILE_MAX_BYTES,
-  type HistoryImportView,
-  type HistoryPage,
-} from '../../schemas/api/history-import';
+import type { HistoryImportView, HistoryPage } from '../../schemas/api/history-import';
+import { HISTORY_FILE_MAX_BYTES } from '../../schemas/lists-and-limits';
 import type { CheckedHistory, HistoryFacts } from './desk';
 import { DeskClient } from './desk-client';
 import { sendHistory, takeBack } from './send';

@@ -1,6 +1,7 @@
 import { ApiError, errorOf } from '../../lib/api';
 import { linesOf } from '../../lib/ndjson';
-import type { ImportBody, ImportLine, ImportOutcome, ImportStep } from '../../schemas/api/import';
+import type { ImportBody, ImportLine, ImportOutcome } from '../../schemas/api/import';
+import type { ImportStep } from '../../schemas/lists-and-limits';
 import { paths } from '../../schemas/paths';
 import { importSend } from '../../words/import';
 

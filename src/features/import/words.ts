@@ -2,7 +2,8 @@ import { COLUMN_LABELS, type ImportColumn } from '../../domain/commissioning/imp
 import type { Change } from '../../domain/commissioning/import/plan';
 import type { CellFault, FaultCode } from '../../domain/commissioning/import/table';
 import { number } from '../../drawings/numbers';
-import type { ChangeKind, ImportOutcome, ImportStep } from '../../schemas/api/import';
+import type { ChangeKind, ImportOutcome } from '../../schemas/api/import';
+import type { ImportStep } from '../../schemas/lists-and-limits';
 
 const plural = (n: number, one: string, many = `${one}s`): string => `${number(n)} ${n === 1 ? one : many}`;
 

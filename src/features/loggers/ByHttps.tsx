@@ -1,5 +1,5 @@
 import { useSyncExternalStore } from 'react';
-import { BATCH_MAX_BYTES, BATCH_MESSAGES_MAX } from '../../schemas/ingest';
+import { BATCH_MAX_BYTES, BATCH_MESSAGES_MAX } from '../../schemas/lists-and-limits';
 import { paths } from '../../schemas/paths';
 import { byHttps } from '../../words/loggers';
 
@@ -18,7 +18,10 @@ export function ByHttps() {
     <div className="max-w-[860px] pb-4 text-[15px] leading-6">
       <p>{byHttps.itFetchesItsRoster}</p>
       <code tabIndex={0} className={box}>
-        {byHttps.curlAuthorizationBearerTOKEN(origin, paths.api.v1IngestRoster(), paths.api.v1Ingest())}
+        {`curl -H "Authorization: Bearer TOKEN" ${origin}${paths.api.v1IngestRoster()}
+
+curl -H "Authorization: Bearer TOKEN" -H "Content-Type: application/x-ndjson" \\
+  --data-binary @readings.ndjson ${origin}${paths.api.v1Ingest()}`}
       </code>
       <p>{byHttps.theAnswerComesOnce(BATCH_MESSAGES_MAX, BATCH_MAX_BYTES, MB)}</p>
     </div>

@@ -1,4 +1,4 @@
-import { useState, type SubmitEvent } from 'react';
+import { useState, type FormEvent } from 'react';
 import { useMutation } from '@tanstack/react-query';
 import { Button } from '../../components/ui/Button';
 import { Choice } from '../../components/ui/Choice';
@@ -34,7 +34,7 @@ export function IsolationForm({ siteId, strings, string, onString, onStarted }: 
     },
     queryClient(),
   );
-  const submit = (event: SubmitEvent) => {
+  const submit = (event: FormEvent) => {
     event.preventDefault();
     const missing: Faults = {
       ...(string ? {} : { string: isolationStart.chooseTheStringThat }),

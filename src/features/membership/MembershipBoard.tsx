@@ -1,11 +1,11 @@
 import { useQuery } from '@tanstack/react-query';
-import { useState } from 'react';
-import { SwapDialog } from '../../components/placements/SwapDialog';
+import { Suspense, useState } from 'react';
 import type { SlotRef } from '../../components/placements/evidence';
 import { LiveHeading } from '../../components/ui/LiveHeading';
 import { NotRead } from '../../components/ui/NotRead';
 import { Notice } from '../../components/ui/Notice';
 import { Segmented } from '../../components/ui/Segmented';
+import { late } from '../../lib/late';
 import { api } from '../../lib/api';
 import { useLive } from '../../lib/live-hook';
 import { replaced } from '../../lib/patch';
@@ -18,6 +18,8 @@ import { isolationKey, isolationQuery } from './query';
 import { SuspectsSheet } from './SuspectsSheet';
 import { membershipWords, unbroken } from './words';
 import { membershipBoard } from '../../words/membership';
+
+const SwapDialog = late(async () => (await import('../../components/placements/SwapDialog')).SwapDialog);
 
 const DEFAULTS: MembershipView = { hours: '6', unit: '' };
 
@@ -129,19 +131,21 @@ export function MembershipBoard({ initial, view: asked, mayWrite }: Props) {
         </div>
       </div>
       {review && (
-        <SwapDialog
-          siteId={id}
-          strings={page.strings}
-          first={review[0]}
-          second={review[1]}
-          onClose={() => setReview(null)}
-          onDone={(body) => {
-            setReview(null);
-            setDone(body.kind === 'swap' ? membershipBoard.theTwoUnitsAre : membershipBoard.theUnitIsMoved);
-            void client.invalidateQueries({ queryKey: ['membership', id] });
-            void client.invalidateQueries({ queryKey: isolationKey(id) });
-          }}
-        />
+        <Suspense>
+          <SwapDialog
+            siteId={id}
+            strings={page.strings}
+            first={review[0]}
+            second={review[1]}
+            onClose={() => setReview(null)}
+            onDone={(body) => {
+              setReview(null);
+              setDone(body.kind === 'swap' ? membershipBoard.theTwoUnitsAre : membershipBoard.theUnitIsMoved);
+              void client.invalidateQueries({ queryKey: ['membership', id] });
+              void client.invalidateQueries({ queryKey: isolationKey(id) });
+            }}
+          />
+        </Suspense>
       )}
     </>
   );

@@ -1,6 +1,6 @@
 import { useCallback, useEffect, useState } from 'react';
 import { api, ApiError } from '../../lib/api';
-import { roofPlan, type RoofPlan } from '../../schemas/api/roof';
+import type { RoofPlan } from '../../schemas/api/roof';
 import { paths } from '../../schemas/paths';
 import {
   begin,
@@ -15,6 +15,10 @@ import {
   type Drawing,
 } from './draft';
 import { roofUseRoof } from '../../words/roof';
+
+/** What the server answered, checked. Schemas are heavy: they come with the first saving. */
+const readPlan = async (answer: unknown): Promise<RoofPlan> =>
+  (await import('../../schemas/api/roof')).roofPlan.parse(answer);
 
 /** A roof that is being drawn, and its keeping. */
 export function useRoof(initial: RoofPlan) {
@@ -49,7 +53,7 @@ export function useRoof(initial: RoofPlan) {
     setBusy(true);
     setError(null);
     try {
-      const kept = roofPlan.parse(
+      const kept = await readPlan(
         await api<unknown>(paths.api.roof(plan.site.id), {
           method: 'PUT',
           body: saveOf(plan, draft, reason),
@@ -68,7 +72,7 @@ export function useRoof(initial: RoofPlan) {
   const reload = async (mine: boolean) => {
     setBusy(true);
     try {
-      const now = roofPlan.parse(await api<unknown>(paths.api.roof(plan.site.id)));
+      const now = await readPlan(await api<unknown>(paths.api.roof(plan.site.id)));
       const own = Object.fromEntries(strings.map((s) => [s.id, draft.slots[s.id] ?? s.slots]));
       setPlan(now);
       setDrawing(begin(mine ? { outline: outline ? draft.outline : now.outline, slots: own } : draftOf(now)));

@@ -1,4 +1,4 @@
-import { useState, type SubmitEvent } from 'react';
+import { useState, type FormEvent } from 'react';
 import { Button } from '../../components/ui/Button';
 import { Caution } from '../../components/ui/Caution';
 import { Field } from '../../components/ui/Field';
@@ -19,7 +19,7 @@ export function CautionStep({ facts, record, person, onAccepted }: Props) {
   const [read, setRead] = useState(false);
   const [tried, setTried] = useState(false);
   const nameFault = tried && name.trim().length < 2 ? cautionStep.enterYourName : undefined;
-  const submit = (event: SubmitEvent) => {
+  const submit = (event: FormEvent) => {
     event.preventDefault();
     setTried(true);
     if (read && name.trim().length >= 2) onAccepted(name.trim());

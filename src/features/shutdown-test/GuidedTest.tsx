@@ -1,4 +1,4 @@
-import { useState, type SubmitEvent } from 'react';
+import { useState, type FormEvent } from 'react';
 import { useMutation } from '@tanstack/react-query';
 import { Button } from '../../components/ui/Button';
 import { Caution } from '../../components/ui/Caution';
@@ -263,7 +263,7 @@ function EndTest({ test }: { test: TestInHand }) {
     },
     queryClient(),
   );
-  const submit = (event: SubmitEvent) => {
+  const submit = (event: FormEvent) => {
     event.preventDefault();
     end.mutate();
   };

@@ -1,4 +1,4 @@
-import { useState, useSyncExternalStore, type SubmitEvent } from 'react';
+import { useEffect, useState, useSyncExternalStore, type FormEvent } from 'react';
 import { Button } from '../../components/ui/Button';
 import { Field } from '../../components/ui/Field';
 import { Segmented } from '../../components/ui/Segmented';
@@ -7,7 +7,7 @@ import { CATEGORIES, LIGHTS, type TestPlan } from '../../domain/commissioning/sh
 import { localDay } from '../../drawings/times';
 import type { ShutdownTestPage } from '../../schemas/api/shutdown-test';
 import { readTyped, typedText, writeTyped } from './kept';
-import { formOf, planForm, readPlan, type PlanForm } from './plan-form';
+import { formOf, type PlanFaults, type PlanForm } from './plan-form';
 import { roundName, roundsNeeded } from './round';
 import { planStep } from '../../words/shutdown-test';
 
@@ -25,6 +25,8 @@ const CATEGORY_WORDS = {
 } as const;
 
 const never = () => () => undefined;
+/** What reads the plan is heavy: it comes after the page, and before anybody has typed one. */
+const reader = () => import('./read-plan');
 
 interface Props {
   page: ShutdownTestPage;
@@ -46,20 +48,30 @@ export function PlanStep({ page, plan, person, now, onPlanned }: Props) {
   );
   const [edited, setEdited] = useState<PlanForm | null>(null);
   const [tried, setTried] = useState(false);
-  const form = edited ?? readTyped(before, planForm) ?? formOf(facts, plan ?? page.suggested, person);
+  const blank = formOf(facts, plan ?? page.suggested, person);
+  const form = edited ?? readTyped(before, blank) ?? blank;
+  const [faults, setFaults] = useState<PlanFaults>({});
+  useEffect(() => void reader(), []);
+  const look = async (typed: PlanForm): Promise<TestPlan | null> => {
+    const { readPlan } = await reader();
+    const read = readPlan(facts, typed, localDay(now(), facts.site.timeZone));
+    setFaults(read.faults);
+    return read.plan;
+  };
   const change = (some: Partial<PlanForm>) => {
     const next = { ...form, ...some };
     setEdited(next);
     writeTyped(name, next);
+    if (tried) void look(next);
   };
-  const { plan: read, faults } = readPlan(facts, form, localDay(now(), facts.site.timeZone));
-  const fault = (field: string) => (tried ? faults[field] : undefined);
-  const submit = (event: SubmitEvent) => {
+  const fault = (field: string) => faults[field];
+  const submit = async (event: FormEvent) => {
     event.preventDefault();
+    const shown = event.currentTarget as HTMLElement;
     setTried(true);
+    const read = await look(form);
     if (!read) {
-      const form = event.currentTarget as HTMLElement;
-      setTimeout(() => form.querySelector<HTMLElement>('[aria-invalid]')?.focus());
+      setTimeout(() => shown.querySelector<HTMLElement>('[aria-invalid]')?.focus());
       return;
     }
     writeTyped(name, null);
@@ -76,7 +88,7 @@ export function PlanStep({ page, plan, person, now, onPlanned }: Props) {
     autoComplete: planStep.off,
   });
   return (
-    <form onSubmit={submit} noValidate className="grid gap-5">
+    <form onSubmit={(event) => void submit(event)} noValidate className="grid gap-5">
       <Sheet id="people" title={planStep.whoIsThere}>
         <div className="grid gap-4 sm:grid-cols-2">
           <Field label={planStep.personOnSite} hint={planStep.inChargeOfThe} {...text('onSite')} />
@@ -214,7 +226,7 @@ export function PlanStep({ page, plan, person, now, onPlanned }: Props) {
         )}
       </Sheet>
       <div>
-        {tried && !read && (
+        {Object.keys(faults).length > 0 && (
           <p role="alert" className="mb-2 font-medium text-rust-ink">
             {Object.values(faults)[0]}
           </p>

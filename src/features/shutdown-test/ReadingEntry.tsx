@@ -1,4 +1,4 @@
-import { useEffect, useId, useState, type SubmitEvent } from 'react';
+import { useEffect, useId, useState, type FormEvent } from 'react';
 import { pressed } from '../../components/readings/form';
 import { NumberPad } from '../../components/readings/NumberPad';
 import { Button } from '../../components/ui/Button';
@@ -51,7 +51,7 @@ export function ReadingEntry({ string, round, moment, timeLimitS, clockS, onSave
     if (moment === 'after' && seconds.text === '' && value !== '')
       setSeconds({ text: String(Math.ceil(clockS() ?? 0)), from: 'clock' });
   };
-  const submit = (event?: SubmitEvent) => {
+  const submit = (event?: FormEvent) => {
     event?.preventDefault();
     const found: typeof faults = {};
     const voltages: Voltages = { positiveToNegativeV: null, positiveToEarthV: null, negativeToEarthV: null };

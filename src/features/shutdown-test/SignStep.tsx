@@ -1,4 +1,4 @@
-import { useState, type SubmitEvent } from 'react';
+import { useState, type FormEvent } from 'react';
 import { useMutation } from '@tanstack/react-query';
 import { Button } from '../../components/ui/Button';
 import { Field } from '../../components/ui/Field';
@@ -132,7 +132,7 @@ function SignForm({
     },
     queryClient(),
   );
-  const submit = (event: SubmitEvent) => {
+  const submit = (event: FormEvent) => {
     event.preventDefault();
     sign.mutate({ password, fingerprint: page.fingerprint });
   };

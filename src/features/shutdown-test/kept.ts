@@ -1,5 +1,4 @@
-import { z } from 'zod';
-import { sentAct, type SentAct } from '../../schemas/api/shutdown-test';
+import type { SentAct } from '../../schemas/api/shutdown-test';
 
 /** What waits in this browser, per test and person: it belongs to whoever did it. */
 
@@ -10,12 +9,23 @@ export interface Kept {
   queue: SentAct[];
   refused: Refused[];
 }
-const kept = z.object({
-  queue: z.array(sentAct),
-  refused: z.array(sentAct.extend({ why: z.string() })),
-});
 const NOTHING: Kept = { queue: [], refused: [] };
 const keyOf = (test: string, person: string) => `wakeline.shutdown-test.${test}.${person}`;
+
+const isRecord = (x: unknown): x is Record<string, unknown> => typeof x === 'object' && x !== null;
+/** As this page writes it. The server checks each act by its schema; here that would cost every visitor its weight. */
+const isAct = (x: unknown): boolean =>
+  isRecord(x) &&
+  typeof x.id === 'string' &&
+  typeof x.at === 'string' &&
+  isRecord(x.act) &&
+  typeof x.act.kind === 'string';
+const isKept = (x: unknown): x is Kept =>
+  isRecord(x) &&
+  Array.isArray(x.queue) &&
+  x.queue.every(isAct) &&
+  Array.isArray(x.refused) &&
+  x.refused.every((act) => isAct(act) && typeof (act as Partial<Refused>).why === 'string');
 
 /** Storage may be full or forbidden: then the acts live as long as the page does. */
 function storage(): Storage | null {
@@ -30,7 +40,8 @@ function readKept(key: string): Kept {
   const text = storage()?.getItem(key);
   if (!text) return NOTHING;
   try {
-    return kept.safeParse(JSON.parse(text)).data ?? NOTHING;
+    const found: unknown = JSON.parse(text);
+    return isKept(found) ? found : NOTHING;
   } catch {
     return NOTHING; // not ours
   }
@@ -72,10 +83,15 @@ export class KeptActs {
 export function typedText(name: string): string | null {
   return storage()?.getItem(`wakeline.typed.${name}`) ?? null;
 }
-export function readTyped<T>(text: string | null, shape: z.ZodType<T>): T | null {
+/** What was typed, where it has the fields of `blank`, each of the same type. */
+export function readTyped<T extends object>(text: string | null, blank: T): T | null {
   if (!text) return null;
   try {
-    return shape.safeParse(JSON.parse(text)).data ?? null;
+    const found: unknown = JSON.parse(text);
+    const kindOf = (x: unknown): string => (Array.isArray(x) ? 'array' : typeof x);
+    const same =
+      isRecord(found) && Object.entries(blank).every(([key, value]) => kindOf(found[key]) === kindOf(value));
+    return same ? (found as T) : null;
   } catch {
     return null; // not ours
   }

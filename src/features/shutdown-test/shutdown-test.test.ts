@@ -3,7 +3,8 @@ import type { RoundEvidence, TestFacts, TestRound } from '../../domain/commissio
 import type { ShutdownTestList, TestListView, TestRow, ZoneStanding } from '../../schemas/api/shutdown-test';
 import { idOf } from '../../../tests/support/now';
 import { LIST_DEFAULTS, listFinding, listedTests } from './list';
-import { formOf, readPlan } from './plan-form';
+import { formOf } from './plan-form';
+import { readPlan } from './read-plan';
 import { linesOf, returnOf, roundsNeeded, stringsConcerned, stringsOfRound } from './round';
 
 const zone = (name: string, more: Partial<ZoneStanding> = {}): ZoneStanding => ({

@@ -10,6 +10,7 @@ import { energy } from '../../drawings/numbers';
 import { localDay } from '../../drawings/times';
 import { Sheet } from '../../components/ui/Sheet';
 import { withQuery } from '../../lib/api';
+import { late } from '../../lib/late';
 import { useLive } from '../../lib/live-hook';
 import { queryClient } from '../../lib/query-client';
 import { useViewInUrl } from '../../lib/view-in-url';
@@ -35,9 +36,7 @@ const HeatSheet = lazy(() => import('./HeatSheet'));
 const LoopSheet = lazy(() => import('./LoopSheet'));
 const ExplanationsSheet = lazy(() => import('./ExplanationsSheet'));
 const NotesSheet = lazy(() => import('./NotesSheet'));
-const TraceSheet = lazy(async () => ({
-  default: (await import('../../components/trace/TraceSheet')).TraceSheet,
-}));
+const TraceSheet = late(async () => (await import('../../components/trace/TraceSheet')).TraceSheet);
 
 interface Props {
   page: StringPage;

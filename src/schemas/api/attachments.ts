@@ -13,12 +13,9 @@ export const ATTACHMENT_SUBJECTS = [
   'connector_pair',
 ] as const;
 
-export const PHOTO_MAX_BYTES = 25 * 1024 * 1024;
 /** What a camera's picture is stored as: JPEG, its longer side at most this many pixels. */
 export const PHOTO_MAX_PIXELS = 2560;
 export const THUMBNAIL_PIXELS = 320;
-/** What a file chooser offers. */
-export const PHOTO_TYPES = 'image/jpeg,image/png,image/webp';
 
 export const attachmentQuery = z.strictObject({
   ref: id, // made where the photo was taken: sent again after a broken upload is stored once

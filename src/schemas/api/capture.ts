@@ -11,9 +11,6 @@ import { readingRecord } from './readings';
 
 const time = z.iso.datetime();
 
-/** Names whose record a phone sends, by public identifier: refused where somebody else is signed in by now. */
-export const PERSON_HEADER = 'x-wakeline-person';
-
 export const unitTypeSheet = z.object({
   id,
   name: z.string(),

@@ -9,6 +9,7 @@ import {
 } from '../../domain/cases/cases';
 import type { CaseFigures } from '../../domain/cases/figures';
 import { id } from './now';
+import { CASE_SORTS, TITLE_MAX, WHAT_MAX, COMMENT_MAX } from '../lists-and-limits';
 
 /** Cases that people work on. Times ISO 8601 in UTC, days as 2026-11-03 at the site. */
 
@@ -82,7 +83,6 @@ export const CLOSED_DAYS = 30;
 /** The most cases that one list holds. */
 export const CASES_MAX = 2000;
 
-export const CASE_SORTS = ['number', 'title', 'site', 'state', 'assignee', 'due', 'changed'] as const;
 export const casesView = z.object({
   look: z.enum(['board', 'list']).catch('board'),
   q: z.string().max(80).catch(''),
@@ -134,10 +134,6 @@ export interface CasePage {
   contact: { name: string; phone: string };
   strings: { id: string; name: string; units: number }[]; // of the site
 }
-
-export const TITLE_MAX = 160;
-export const WHAT_MAX = 8000;
-export const COMMENT_MAX = 8000;
 
 const clean = (text: string) => !/[^\P{C}\n\r\t]/u.test(text);
 const CONTROL = 'Leave control characters out.';

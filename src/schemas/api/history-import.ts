@@ -7,8 +7,6 @@ import { id } from './now';
 
 const time = z.iso.datetime();
 
-/** Bytes of a file as UTF-8 text, rows of it, and readings that come out of it. */
-export const HISTORY_FILE_MAX_BYTES = 28 * 1024 * 1024;
 export const HISTORY_ROWS_MAX = 400_000;
 export const HISTORY_READINGS_MAX = 1_000_000;
 const COLUMNS_MAX = 200;

@@ -2,6 +2,7 @@ import { z } from 'zod';
 import { IMPORT_COLUMNS, REQUIRED_COLUMNS } from '../../domain/commissioning/import/columns';
 import type { Change } from '../../domain/commissioning/import/plan';
 import { NAME_COLUMNS, type CellFault, type KnownNames } from '../../domain/commissioning/import/table';
+import { type ImportStep } from '../lists-and-limits';
 
 /** Rows and cells of one import. */
 export const IMPORT_ROWS_MAX = 20_000;
@@ -85,9 +86,6 @@ export interface ImportOutcome {
   /** Of the changes: give it back with `apply`. */
   fingerprint: string;
 }
-
-export const IMPORT_STEPS = ['reading', 'comparing', 'strings', 'slots', 'units', 'kept'] as const;
-export type ImportStep = (typeof IMPORT_STEPS)[number];
 
 /** Lines of the answer where it is asked for as application/x-ndjson; the last one is an outcome or a problem. */
 export type ImportLine =

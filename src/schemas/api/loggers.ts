@@ -5,8 +5,6 @@ import { id } from './now';
 
 const time = z.iso.datetime();
 
-/** For how long a token may go on beside a newer one, hours; 0: it ends at once. */
-export const OVERLAP_HOURS = [0, 1, 24, 72, 168] as const;
 export const OVERLAP_HOURS_MAX = 168;
 
 export const tokenState = z.enum(['in_force', 'ending', 'ended']);

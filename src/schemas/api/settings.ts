@@ -1,28 +1,10 @@
 import { z } from 'zod';
 import { THRESHOLD_KEYS, THRESHOLDS, type ThresholdKey } from '../../domain/settings/thresholds';
 import { typedNumber } from '../typed-number';
+import { CURRENCIES } from '../lists-and-limits';
 
 /** What an organisation sets for itself. */
 
-export const CURRENCIES = [
-  'AUD',
-  'BRL',
-  'CAD',
-  'CHF',
-  'CZK',
-  'DKK',
-  'EUR',
-  'GBP',
-  'INR',
-  'JPY',
-  'MXN',
-  'NOK',
-  'NZD',
-  'PLN',
-  'SEK',
-  'USD',
-  'ZAR',
-] as const;
 export const UNITS = ['metric', 'imperial'] as const;
 export type Units = (typeof UNITS)[number];
 

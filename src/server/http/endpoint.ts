@@ -1,7 +1,7 @@
 import type { APIContext, APIRoute } from 'astro';
 import { z } from 'zod';
 import { mayUse, type Actor, type Permission } from '../../domain/access/permissions';
-import { PERSON_HEADER } from '../../schemas/api/capture';
+import { PERSON_HEADER } from '../../schemas/lists-and-limits';
 import { asActor, type Tx } from '../db/transaction';
 import { AppError } from '../errors';
 import { asOnlooker } from '../replica';

@@ -1,6 +1,6 @@
 import { gzipSync } from 'node:zlib';
 import { describe, expect, it } from 'vitest';
-import { BATCH_MAX_BYTES, BATCH_UNPACKED_MAX_BYTES } from '../../schemas/ingest';
+import { BATCH_MAX_BYTES, BATCH_UNPACKED_MAX_BYTES } from '../../schemas/lists-and-limits';
 import { messagesOf, readBatchBody } from './batch-body';
 
 const request = (body: BodyInit | null, headers: Record<string, string> = {}) =>

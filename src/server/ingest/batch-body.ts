@@ -2,12 +2,12 @@ import { Readable } from 'node:stream';
 import { pipeline } from 'node:stream/promises';
 import type { ReadableStream } from 'node:stream/web';
 import { createGunzip } from 'node:zlib';
+import { MESSAGE_MAX_BYTES } from '../../schemas/ingest';
 import {
   BATCH_MAX_BYTES,
   BATCH_MESSAGES_MAX,
   BATCH_UNPACKED_MAX_BYTES,
-  MESSAGE_MAX_BYTES,
-} from '../../schemas/ingest';
+} from '../../schemas/lists-and-limits';
 import { AppError } from '../errors';
 import { readJson, type Reading } from './read-message';
 

@@ -2,7 +2,7 @@ import { createHash } from 'node:crypto';
 import { signedRecords } from '../../domain/commissioning/checks/sign-off';
 import type { CheckRecord } from '../../schemas/api/checks';
 import type { CaptureSnapshot } from '../../schemas/api/capture';
-import { PHOTO_MAX_BYTES } from '../../schemas/api/attachments';
+import { PHOTO_MAX_BYTES } from '../../schemas/lists-and-limits';
 import type { Tx } from '../db/transaction';
 import { found } from '../errors';
 import { moduleTypesOf, ruleSetOf, stringSheets, unitTypesOf } from '../queries/captured-site';

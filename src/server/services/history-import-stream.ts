@@ -1,9 +1,6 @@
 import type { Actor } from '../../domain/access/permissions';
-import {
-  HISTORY_FILE_MAX_BYTES,
-  type HistoryImportView,
-  type HistoryLine,
-} from '../../schemas/api/history-import';
+import type { HistoryImportView, HistoryLine } from '../../schemas/api/history-import';
+import { HISTORY_FILE_MAX_BYTES } from '../../schemas/lists-and-limits';
 import { asActor } from '../db/transaction';
 import { AppError, found } from '../errors';
 import { spool } from '../files/spool';

@@ -12,8 +12,8 @@ import {
   type ImportOrder,
   type ImportOutcome,
   type ImportPage,
-  type ImportStep,
 } from '../../schemas/api/import';
+import { type ImportStep } from '../../schemas/lists-and-limits';
 import type { Tx } from '../db/transaction';
 import { AppError, found } from '../errors';
 import { importParts, namesOf, slotsOfStrings } from '../queries/import-as-built';

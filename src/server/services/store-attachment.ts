@@ -1,7 +1,8 @@
 import { createHash } from 'node:crypto';
 import { readFile } from 'node:fs/promises';
 import { mayUse, type Actor } from '../../domain/access/permissions';
-import { PHOTO_MAX_BYTES, type AttachmentItem, type AttachmentQuery } from '../../schemas/api/attachments';
+import type { AttachmentItem, AttachmentQuery } from '../../schemas/api/attachments';
+import { PHOTO_MAX_BYTES } from '../../schemas/lists-and-limits';
 import { asActor, type Tx } from '../db/transaction';
 import { AppError, found } from '../errors';
 import { readPhoto } from '../files/photo';

@@ -1,0 +1,23 @@
+import type { Plugin } from 'vite';
+
+/** What most islands load, by the part of the path that tells: one file each packs tighter than forty small ones. */
+const TOGETHER: readonly (readonly [name: string, test: RegExp])[] = [
+  ['react', /node_modules\/(react|react-dom|scheduler|@astrojs\/react)\//],
+  ['query', /node_modules\/@tanstack\//],
+  [
+    'common',
+    /src\/(components\/ui\/(?!Dialog|Figure|Fold|Choice|Field)|lib\/(api|live|live-hook|view-in-url)\.|drawings\/(numbers|times)\.|schemas\/paths\.|words\/(ui|language)\.)|vite\/preload-helper/,
+  ],
+];
+
+/** How the browser's scripts are cut into files. The server's bundle is left as it comes. */
+export function bundles(): Plugin {
+  return {
+    name: 'wakeline:bundles',
+    applyToEnvironment: (environment) => environment.name === 'client',
+    outputOptions: (options) => ({
+      ...options,
+      manualChunks: (id) => TOGETHER.find(([, test]) => test.test(id))?.[0],
+    }),
+  };
+}

@@ -1,0 +1,87 @@
+import { beforeAll, describe, expect, it } from 'vitest';
+import { pageWeights, type PageWeight } from '../support/page-weight';
+
+/** Scripts that a page's first load fetches, gzip: by the build itself, so nothing grows unnoticed. Bytes. */
+const WITHOUT_CHART = 95_000;
+const WITH_CHART = 290_000;
+/** Pages that are still above the aim, and what they may weigh: a line may only shrink or go. */
+const STILL_ABOVE: Readonly<Record<string, number>> = {
+  'index.astro': 98_000,
+  'capture/[site].astro': 125_000,
+  'capture/index.astro': 125_000,
+  'cases/[case].astro': 109_000,
+  'cases/index.astro': 97_000,
+  'commissioning/new.astro': 97_000,
+  'commissioning/[site]/as-built.astro': 107_000,
+  'commissioning/[site]/checks.astro': 113_000,
+  'commissioning/[site]/readings.astro': 110_000,
+  'commissioning/[site]/roll-call.astro': 113_000,
+  'commissioning/[site]/serials.astro': 97_000,
+  'commissioning/[site]/shutdown-test/[test].astro': 132_000,
+  'commissioning/[site]/shutdown-test/index.astro': 107_000,
+  'commissioning/[site]/walk.astro': 98_000,
+  'equipment/[family]/[type].astro': 97_000,
+  'methods.astro': 115_000,
+  'my-site/[site].astro': 98_000,
+  'sites/[site]/index.astro': 110_000,
+  'try-a-reading.astro': 100_000,
+};
+/** The same of pages with a chart, all in all. */
+const STILL_ABOVE_WITH_CHART: Readonly<Record<string, number>> = {
+  'commissioning/[site]/membership.astro': 309_000,
+  'sites/[site]/strings/[string].astro': 320_000,
+};
+/** Before the chart comes. */
+const BEFORE_CHART = 120_000;
+
+let pages: PageWeight[];
+beforeAll(async () => {
+  pages = await pageWeights();
+});
+
+/** Those over a limit, with the heaviest of their files: what the failing test says. */
+const over = (limit: (page: PageWeight) => number, of: (page: PageWeight) => number): string[] =>
+  pages
+    .filter((p) => of(p) > limit(p))
+    .map(
+      (p) =>
+        `${p.page}: ${of(p)}, of it ${p.files
+          .slice(0, 8)
+          .map(([f, bytes]) => `${f} ${bytes}`)
+          .join(', ')}`,
+    );
+
+describe('what a page loads', () => {
+  it('is weighed: islands, their renderer, the chart', () => {
+    const fleet = pages.find((p) => p.page === 'index.astro');
+    expect(fleet?.first).toBeGreaterThan(50_000);
+    expect(pages.filter((p) => p.chart > 0).map((p) => p.page)).toContain(
+      'sites/[site]/strings/[string].astro',
+    );
+    expect(pages.find((p) => p.page === 'sign-in.astro')?.first).toBeGreaterThan(0);
+  });
+
+  it('stays below its limit without a chart', () => {
+    expect(
+      over(
+        (p) => STILL_ABOVE[p.page] ?? WITHOUT_CHART,
+        (p) => (p.chart > 0 ? 0 : p.first),
+      ),
+    ).toEqual([]);
+  });
+
+  it('stays below its limits with a chart, which comes late', () => {
+    expect(
+      over(
+        () => BEFORE_CHART,
+        (p) => (p.chart > 0 ? p.first : 0),
+      ),
+    ).toEqual([]);
+    expect(
+      over(
+        (p) => STILL_ABOVE_WITH_CHART[p.page] ?? WITH_CHART,
+        (p) => (p.chart > 0 ? p.first + p.chart : 0),
+      ),
+    ).toEqual([]);
+  });
+});
