@@ -13,8 +13,9 @@ const figure = (name: string, value: number, unit: string, digits = 3) =>
 
 const three = await threeServers();
 try {
-  await tryForeign(three, { figure, say });
-  await tryGroups(three, { figure, say });
+  const only = process.argv[2]; // foreign or groups
+  if (only !== 'groups') await tryForeign(three, { figure, say });
+  if (only !== 'foreign') await tryGroups(three, { figure, say });
 } finally {
   await three.stop();
 }

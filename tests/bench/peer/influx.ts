@@ -28,6 +28,8 @@ bind-address = "127.0.0.1:${ports.rpc}"
   wal-dir = "${folder}/wal"
   wal-fsync-delay = "0s" # each write is on disk before it is answered
   query-log-enabled = false
+[coordinator]
+  write-timeout = "120s" # a busy disk is waited for, on both sides
 [monitor]
   store-enabled = false
 [http]

@@ -35,11 +35,11 @@ async function build({ db, port }: Three): Promise<void> {
     create table frame (${COLUMNS}) partition by hash (organisation_id);`);
   for (const [i, at] of (['left', 'right'] as const).entries())
     await db.front.query(
-      `create server ${at} foreign data wrapper postgres_fdw
+      `create server ${at}_server foreign data wrapper postgres_fdw
          options (host '127.0.0.1', port '${port[at]}', dbname 'wakeline', batch_size '500', fetch_size '2000', async_capable 'true');
-       create user mapping for public server ${at} options (user 'postgres', password '${PASSWORD}');
+       create user mapping for public server ${at}_server options (user 'postgres', password '${PASSWORD}');
        create foreign table frame_${at} partition of frame for values with (modulus 2, remainder ${i})
-         server ${at} options (schema_name 'trial', table_name 'frame');`,
+         server ${at}_server options (schema_name 'trial', table_name 'frame');`,
     );
   await db.front.query(
     `create role reader; grant usage on schema trial to reader; grant select on string, frame to reader;

@@ -17,6 +17,7 @@ export async function tryGroups(three: Three, { figure, say }: Foreign): Promise
   say('groups: the product’s schema on two servers');
   for (const [group, at] of (['left', 'right'] as const).entries()) {
     await migrate(url[at]);
+    await db[at].query('reset search_path'); // of the trial before
     await takeNumbersOf(db[at], group);
   }
   await db.front.query('create table directory (organisation uuid primary key, address text not null)');
