@@ -8,6 +8,7 @@ import { asActor, type Tx } from '../../src/server/db/transaction';
 import { hasJustWritten, justWrittenCookie } from '../../src/server/http/just-written';
 import { log } from '../../src/server/log';
 import { asOnlooker, piecesAsOnlooker, replicaStatus } from '../../src/server/replica';
+import { readStatus } from '../../src/server/services/status';
 import { atPort, baseBackup, startServer, type SecondServer } from '../../src/server/up/second-cluster.mjs';
 import { askV1, tokenFor, writeFrames } from '../support/api-v1';
 import { testFleet, type TestFleet } from '../support/fleet';
@@ -81,6 +82,8 @@ describe('a replica that keeps up', () => {
       /read-only/,
     );
     expect(await replicaStatus()).toMatchObject({ configured: true, lagS: expect.any(Number) as number });
+    const status = await asActor(manager, (tx) => readStatus(tx, new Date()));
+    expect(status.replica).toMatchObject({ state: 'serves', lagS: expect.any(Number) as number });
   });
 
   it('gives the same history of a string and the same stream as the primary, and reads a stream to its end', async () => {

@@ -24,7 +24,7 @@ const row = 'flex flex-wrap justify-between gap-x-4 border-b border-rule-faint p
 
 /** Loggers with what was refused from each, the newest refusal first; processes; how far the work is. */
 export function StatusSheets({ status, timeZone }: { status: InstallationStatus; timeZone: string }) {
-  const { at: now, database, loggers, processes, work } = status;
+  const { at: now, database, loggers, processes, replica, work } = status;
   const columns: Column<Logger>[] = [
     {
       key: 'logger',
@@ -162,6 +162,15 @@ export function StatusSheets({ status, timeZone }: { status: InstallationStatus;
               <dt>{statusSheets.organisationsKeptApartBy}</dt>
               <dd>{database.rowSecurity ? statusSheets.yes : statusSheets.noOneAccount}</dd>
             </div>
+            {replica && (
+              <div className={row}>
+                <dt>{statusSheets.replica}</dt>
+                <dd>
+                  {statusSheets.replicaState[replica.state]}
+                  {replica.lagS !== null && statusSheets.secondsBehind(replica.lagS)}
+                </dd>
+              </div>
+            )}
             {status.unknownTokens !== null && (
               <div className={row}>
                 <dt>{statusSheets.connectionsRefusedForAn}</dt>

@@ -19,6 +19,7 @@ const logger = (serial: string, some: Partial<InstallationStatus['loggers'][numb
 const status = (some: Partial<InstallationStatus> = {}): InstallationStatus => ({
   at: AT,
   database: { version: '15.1', bytes: 1e9, rowSecurity: true },
+  replica: null,
   processes: [],
   unknownTokens: null,
   loggers: [logger('A'), logger('B')],
@@ -44,6 +45,16 @@ describe('how an installation runs', () => {
     expect(statusFinding(status({ loggers: [logger('A', { refused: 3 })] })).sentence).toContain(
       '3\u00a0messages refused',
     );
+  });
+
+  it('says that the replica does not serve', () => {
+    expect(statusFinding(status({ replica: { state: 'serves', lagS: 0.4 } })).heading).toBe(
+      'The installation runs as it should',
+    );
+    for (const state of ['behind', 'away'] as const)
+      expect(statusFinding(status({ replica: { state, lagS: null } })).heading).toBe(
+        'The replica does not serve, so the primary answers its readers',
+      );
   });
 
   it('names what stands still before loggers that are away', () => {

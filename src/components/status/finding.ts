@@ -1,4 +1,4 @@
-import { listed, number } from '../../drawings/numbers';
+import { listed } from '../../drawings/numbers';
 import type { InstallationStatus } from '../../schemas/api/status';
 import { statusFindingWords } from '../../words/status';
 
@@ -20,7 +20,7 @@ export const placesMissing = ({ work, at }: InstallationStatus): boolean =>
 
 /** How the installation runs, as a heading and what follows. */
 export function statusFinding(status: InstallationStatus): { heading: string; sentence: string } {
-  const { loggers, database } = status;
+  const { loggers, database, replica } = status;
   const away = loggers.filter((l) => !l.connected);
   const refused = loggers.reduce((sum, l) => sum + l.refused, 0);
   const faults = [
@@ -28,6 +28,7 @@ export function statusFinding(status: InstallationStatus): { heading: string; se
     rollUpLate(status) ? statusFindingWords.rollUpsStandStill : '',
     placesMissing(status) ? statusFindingWords.noPlaceIsPrepared : '',
     database.rowSecurity ? '' : statusFindingWords.allRunsWithOne,
+    replica && replica.state !== 'serves' ? statusFindingWords.theReplicaDoesNot : '',
   ].filter(Boolean);
   const counts = statusFindingWords.loggersOfLoggersConnected(loggers.length, away.length, refused);
   if (faults.length > 0) {

@@ -11,6 +11,8 @@ export const installationStatus = z.object({
     /** False: all runs with one database account, so the second wall between organisations is missing. */
     rowSecurity: z.boolean(),
   }),
+  /** The replica that answers readers of history and reports; null: none is set up. */
+  replica: z.object({ state: z.enum(['serves', 'behind', 'away']), lagS: z.number().nullable() }).nullable(),
   /** Processes that serve loggers now. */
   processes: z.array(z.object({ name: z.string(), loggers: z.int(), until: time })),
   /** Connections tried with a token that nobody knows, at the process that answers and since it started; null: it takes no loggers. */
