@@ -136,7 +136,7 @@ beforeAll(async () => {
     loggers.push(logger);
     void logger.live();
   }
-});
+}, 240_000); // three programs start
 afterAll(async () => {
   for (const logger of loggers) logger.end();
   for (const watcher of watchers) watcher.stop();
