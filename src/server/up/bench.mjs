@@ -29,6 +29,7 @@ export async function bench([name, ...rest]) {
       `There are: ${names.join(', ') || 'none'}.`,
     );
   const stage = await stageDatabase('bench');
+  if (stage.own) await dropLeftBehind(stage.url);
   const database = `wakeline_bench_${process.pid}`;
   await withClient(stage.url, (db) => db.query(`create database "${database}"`));
   try {
@@ -67,4 +68,13 @@ async function dropDatabase(url, database) {
       if (error.code !== '42501' || tries >= 150) throw error;
       await sleep(200);
     }
+}
+
+/** Databases of benches that ended without a chance to drop theirs. */
+async function dropLeftBehind(url) {
+  const { rows } = await withClient(url, (db) =>
+    db.query(`select datname from pg_database where datname ~ '^wakeline_bench_[0-9]+$'`),
+  );
+  for (const { datname } of rows)
+    if (!fs.existsSync(`/proc/${datname.split('_').at(-1)}`)) await dropDatabase(url, datname);
 }
