@@ -125,6 +125,7 @@ async function torture(): Promise<void> {
   const b = await site('b', 'web,ingest');
   const w = await site('w', 'worker');
   const sites = [a, b, w];
+  for (const one of sites) await one.ready(90_000); // a build that can't run is no matter for this
   const proxy = await roundRobin([a.port, b.port]);
   undo.push(() => proxy.close());
 
