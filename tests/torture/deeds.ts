@@ -156,6 +156,7 @@ export class SmallDisk {
   /** Null where this account may not mount. */
   static async make(folder: string, megabytes: number, owner: string): Promise<SmallDisk | null> {
     fs.mkdirSync(folder, { recursive: true });
+    await new SmallDisk(folder).remove(); // what a run that was killed left
     try {
       await promisify(execFile)('mount', [
         '-t',
