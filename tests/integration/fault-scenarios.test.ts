@@ -1,24 +1,31 @@
-import type pg from 'pg';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
-import type { SeededSite } from '../../seeds/plant/seeded';
-import { frameOf, inputRows, radioOf } from '../../simulator/logger/readings';
 import type { Fault } from '../../simulator/faults/kinds';
-import type { SitePlant } from '../../simulator/plant/site-plant';
 import { ON_KEEP_ALIVE } from '../../simulator/scenarios/catalogue';
-import { JudgeWriter } from '../../src/server/ingest/judge-writer';
-import { SiteJudge } from '../../src/server/ingest/judge-site';
+import type { Actor } from '../../src/domain/access/permissions';
+import type { CaseKind } from '../../src/domain/cases/cases';
+import { checklistOf } from '../../src/domain/cases/checklists';
 import { database } from '../../src/server/db/pools';
-import { judgeSiteCauses } from '../../src/server/jobs/judge-causes';
-import { writeFrames } from '../../src/server/queries/ingest-frames';
-import { learnGateways, writeInputs } from '../../src/server/queries/ingest-reports';
-import { judgedSite } from '../../src/server/queries/judgement-contexts';
-import { build, DAY_S, Draw, drawPlant } from '../bench/diagnosis/plants';
+import { nightsDue } from '../../src/server/jobs/nights-due';
+import { judgeNight } from '../../src/server/jobs/output-night';
+import { tellGathered } from '../../src/server/jobs/tell';
+import { setRollupWatermark } from '../../src/server/queries/rollup';
+import { checkClosedCases } from '../../src/server/services/check-closed-cases';
+import { Draw, drawPlant } from '../bench/diagnosis/plants';
 import { testDatabase, type TestDatabase } from '../support/database';
-import { ingestClient, seedDrawn } from '../support/pipeline';
+import { tellAll } from '../support/happenings';
+import {
+  analystOf,
+  caseOf,
+  closeCase,
+  LivePlant,
+  openCauses,
+  readCase,
+  type OpenCause,
+} from '../support/live-plant';
 
 /**
- * The simulator's plant at noon, minute by minute by a clock of its own: what it reports is written as ingest writes it,
- * judged, and made causes of. Each fault is found, and over when it is mended.
+ * The simulator's plant at noon, minute by minute: each fault is found and explained, a case is opened from the cause,
+ * the fault is mended, readings recover, the case is closed, and the next day shows whether it held.
  */
 const drawn = drawPlant(
   {
@@ -36,131 +43,28 @@ const drawn = drawPlant(
   new Draw(7),
 );
 const { plan } = drawn;
-// the drawn day is put to yesterday by whole days: noon stays noon
-const SHIFT_S = Math.floor((Date.now() / 1000 - DAY_S - drawn.fromS) / DAY_S) * DAY_S;
-const NOON_S = drawn.fromS + DAY_S / 2;
 
 let db: TestDatabase;
-let client: pg.Client;
-let site: SeededSite;
-let plant: SitePlant;
-let judge: SiteJudge;
-let atS = NOON_S;
-const writer = new JudgeWriter({ lost: () => undefined, heard: () => undefined });
-const real = (s: number): number => s + SHIFT_S;
+let live: LivePlant;
+let analyst: Actor;
+/** Cases that were closed and wait to be looked at again, by what was wrong. */
+const closed = new Map<string, string>();
+/** Cases of what is mended, closed in the evening: another scenario may strike the same units that day. */
+const mended = new Map<string, string>();
 
 beforeAll(async () => {
   db = await testDatabase();
-  [site] = (await seedDrawn(db, [plan], real(NOON_S) - 90 * DAY_S)) as [SeededSite];
-  await db.owner.query(`update site set stage = 'operating'`);
-  await db.owner.query('select ensure_days($1::date, $2::date)', [
-    new Date((real(NOON_S) - DAY_S) * 1000),
-    new Date((real(NOON_S) + DAY_S) * 1000),
-  ]);
-  await db.owner.query(
-    `insert into heard (site_id, serial, unit_id, logger_id, gateway_number, first_heard_at, last_heard_at)
-     select $1, u.serial, u.id, (select min(id) from logger where site_id = $1), 1, $2, $2
-     from placement p join unit u on u.id = p.unit_id where p.site_id = $1 on conflict do nothing`,
-    [site.id, new Date((real(NOON_S) - 80 * DAY_S) * 1000)],
-  );
-  for (const zone of site.zones.values()) await command(zone, 'released', NOON_S - 7200);
-  client = await ingestClient(db);
-  plant = build(drawn, [], NOON_S - 7200);
-  for (let s = NOON_S - 7200; s < NOON_S; s += 60) plant.step(s);
-  judge = new SiteJudge((await judgedSite(database('ingest'), site.id))!, [], real(NOON_S));
-  await minutes(6);
+  live = new LivePlant(db, drawn);
+  await live.start();
+  analyst = await analystOf(db);
 });
 afterAll(async () => {
-  await writer.stop();
-  await client.end();
+  await live.stop();
   await db.drop();
 });
 
-async function command(zone: number, inForce: string, since: number): Promise<void> {
-  await db.owner.query(
-    `insert into command (site_id, zone_id, in_force, since, said_by) values ($1, $2, $3, $4, 'Initiator')`,
-    [site.id, zone, inForce, new Date(real(since) * 1000)],
-  );
-}
-
-/** The plant goes on for so many minutes; each minute is written, judged, and causes are looked for. */
-async function minutes(n: number): Promise<void> {
-  const logger = plan.loggers[0]!.serial;
-  const loggerId = site.loggers.get(logger)!;
-  for (let k = 0; k < n; k++) {
-    atS += 60;
-    plant.step(atS);
-    const at = real(atS);
-    const radio = radioOf(plant, logger);
-    const rows = plan.strings.flatMap((s) => {
-      const frame = frameOf(
-        plant,
-        radio,
-        s.slots.map((slot) => slot.serial),
-      );
-      if (!frame) return [];
-      const empty = s.slots.map(() => null);
-      return [
-        {
-          stringId: site.strings.get(s.name)!.id,
-          siteId: site.id,
-          at,
-          voltage: frame.voltageOut ?? empty,
-          voltageIn: frame.voltageIn ?? null,
-          current: frame.current ?? empty,
-          power: frame.powerOut ?? null,
-          temperature: frame.temperature ?? empty,
-          signal: frame.signal ?? empty,
-          via: frame.via,
-          state: frame.state,
-        },
-      ];
-    });
-    await writeFrames(client, rows, new Date(0));
-    const heard = [...new Set(rows.flatMap((r) => r.via.flatMap((v) => (v === null ? [] : [v]))))];
-    await learnGateways(
-      client,
-      heard.map((number) => ({ siteId: site.id, loggerId, number, heardAt: at })),
-    );
-    await writeInputs(
-      client,
-      inputRows(plant, logger).map((r) => ({
-        inputId: site.inputs.get(`${r.inverter}/${r.input}`)!,
-        siteId: site.id,
-        at,
-        voltage: r.voltage,
-        current: r.current,
-      })),
-    );
-    await db.owner.query(`update logger set connected_at = $1, last_spoke_at = $1`, [new Date(at * 1000)]);
-    const outcomes = rows.flatMap((r) => {
-      const outcome = judge.frame(r.stringId, {
-        atS: at,
-        state: r.state,
-        voltageOut: r.voltage,
-        voltageIn: r.voltageIn ?? undefined,
-      });
-      return outcome ? [{ site: judge, outcome }] : [];
-    });
-    for (const judged of judge.strings.values()) {
-      const outcome = judge.sweep(judged, at);
-      if (outcome) outcomes.push({ site: judge, outcome });
-    }
-    await writer.write(outcomes);
-    writer.checkpoint(judge, true);
-    await writer.flush();
-    await judgeSiteCauses(site.id, new Date(at * 1000));
-  }
-}
-const open = async () =>
-  (
-    await db.owner.query<{ kind: string; part: string | null; units: number; key: string }>(
-      `select kind, shared_part ->> 'kind' || ' ' || (shared_part ->> 'name') as part, jsonb_array_length(units) as units, key
-       from cause where closed_at is null order by kind, id`,
-    )
-  ).rows;
-/** What was told since; the closing of rows whose units another has is none. */
-const told = async (sinceId: number) =>
+const open = (): Promise<OpenCause[]> => openCauses(db);
+const told = async (sinceId: number): Promise<string[]> =>
   (
     await db.owner.query<{ line: string }>(
       `select replace(kind, 'cause_', '') || ' ' || (detail ->> 'kind') as line from event
@@ -171,47 +75,85 @@ const told = async (sinceId: number) =>
 const lastEvent = async (): Promise<number> =>
   (await db.owner.query<{ id: number }>('select coalesce(max(id), 0) as id from event')).rows[0]?.id ?? 0;
 
-const zoneOf = (letter: string): string => plan.strings.find((s) => s.name.startsWith(letter))!.zone;
-const namesOf = (letter: string): string[] =>
-  plan.strings.filter((s) => s.name.startsWith(letter)).map((s) => s.name);
+const stringOf = (letter: string, nth: number) =>
+  plan.strings.filter((s) => s.name.startsWith(letter))[nth - 1]!;
+const zoneOf = (letter: string): string => stringOf(letter, 1).zone;
 
-/** Lets a fault be for some minutes, says what is found, mends it, and waits until nothing is open. */
-async function scenario(fault: Fault, forMinutes: number, mendedFor: number) {
+/** What each kind of case has to ask before anybody is called. */
+const ASKED: Partial<Record<CaseKind, string>> = {
+  stuck: 'keep_alive',
+  silent: 'gateway_power',
+  unconfirmed: 'meter',
+  not_shutting_down: 'cross_talk',
+};
+
+/** Opens a case from each cause, with the checklist of its kind and the figures of this minute. */
+async function openCases(causes: readonly OpenCause[]): Promise<Map<OpenCause, string>> {
+  const cases = new Map<OpenCause, string>();
+  for (const cause of causes) {
+    const ref = await caseOf(analyst, live.site.ref, cause, live.date());
+    const page = await readCase(analyst, ref, live.date());
+    expect(page.kind).toBe(cause.kind);
+    expect(checklistOf(page.kind).map((item) => item.key)).toContain(ASKED[page.kind]);
+    expect(page.parts).toHaveLength(cause.units);
+    expect(page.before?.light.is).toBe('light');
+    cases.set(cause, ref);
+  }
+  return cases;
+}
+
+/** Lets faults be for some minutes, opens cases, mends what is wrong and waits until nothing is open. */
+async function scenario(name: string, faults: readonly Fault[], forMinutes: number, mendedFor: number) {
   expect(await open()).toEqual([]);
   const before = await lastEvent();
-  const entry = plant.faults.add(fault, atS + 30);
-  await minutes(forMinutes);
+  const entries = faults.map((fault) => live.plant.faults.add(fault, live.atS + 30));
+  await live.minutes(forMinutes);
   const found = await open();
-  plant.faults.clear(entry.id, atS + 30);
-  await minutes(mendedFor);
+  const cases = await openCases(found);
+  for (const entry of entries) live.plant.faults.clear(entry.id, live.atS + 30);
+  await live.minutes(mendedFor);
   expect(await open()).toEqual([]);
+  for (const [cause, ref] of cases) mended.set(`${name}: ${cause.kind}`, ref);
   return { found, told: await told(before) };
 }
 
-describe('the plant’s faults, from its reports to causes and their end', () => {
-  const [first, second] = namesOf('A') as [string, string];
+describe('the plant’s faults, from its reports to causes, cases and their end', { timeout: 300_000 }, () => {
+  const first = stringOf('A', 1).name;
+  const second = stringOf('A', 2).name;
 
-  it('a unit stuck in shutdown', async () => {
+  it('a unit stuck in shutdown, and one whose radio is dead', async () => {
+    const mute = stringOf('B', 2).name;
     const { found, told: events } = await scenario(
-      { kind: 'stuck', string: first, position: 3, at: 'now' },
+      'units',
+      [
+        { kind: 'stuck', string: first, position: 3, at: 'now' },
+        { kind: 'unit_mute', string: mute, position: 4 },
+      ],
       16,
       12,
     );
-    expect(found).toMatchObject([{ kind: 'stuck', units: 1 }]);
-    expect(found[0]?.key).toContain(':3@');
-    expect(events).toEqual(['opened stuck', 'closed stuck']);
+    expect(found.map((c) => [c.kind, c.units, c.headline])).toEqual([
+      ['silent', 1, `Unit 4 of ${mute} is silent`],
+      ['stuck', 1, `Unit 3 of ${first} is stuck in shutdown`],
+    ]);
+    expect(events.sort()).toEqual(['closed silent', 'closed stuck', 'opened silent', 'opened stuck']);
   });
 
   it('a string that lost the keep-alive', async () => {
-    const transmitter = plan.strings.find((s) => s.name === second)!.transmitters[0]!;
-    const { found } = await scenario({ kind: 'transmitter_unheard', transmitter, strings: [second] }, 18, 14);
+    const transmitter = stringOf('A', 2).transmitters[0]!;
+    const { found } = await scenario(
+      'string',
+      [{ kind: 'transmitter_unheard', transmitter, strings: [second] }],
+      18,
+      14,
+    );
     expect(found).toMatchObject([{ kind: 'stuck', part: `string ${second}` }]);
-    expect(found[0]?.units).toBe(plan.strings.find((s) => s.name === second)!.slots.length);
+    expect(found[0]?.units).toBe(stringOf('A', 2).slots.length);
   });
 
   it('a dead transmitter: one cause, not one for each of its strings', async () => {
-    const transmitter = plan.strings.find((s) => s.name.startsWith('B'))!.transmitters[0]!;
-    const { found } = await scenario({ kind: 'transmitter_off', transmitter }, 18, 14);
+    const transmitter = stringOf('B', 1).transmitters[0]!;
+    const { found } = await scenario('transmitter', [{ kind: 'transmitter_off', transmitter }], 18, 14);
     expect(found).toHaveLength(1);
     expect(found[0]?.kind).toBe('stuck');
     expect([`transmitter ${transmitter}`, `zone ${zoneOf('B')}`]).toContain(found[0]?.part);
@@ -220,7 +162,8 @@ describe('the plant’s faults, from its reports to causes and their end', () =>
   it('a silent gateway: its units together, and the gateway by name', async () => {
     const before = await lastEvent();
     const { found } = await scenario(
-      { kind: 'gateway_out', logger: plan.loggers[0]!.serial, gateway: 2, keeps: false },
+      'gateway',
+      [{ kind: 'gateway_out', logger: plan.loggers[0]!.serial, gateway: 2, keeps: false }],
       14,
       12,
     );
@@ -233,27 +176,147 @@ describe('the plant’s faults, from its reports to causes and their end', () =>
     expect(gateway.rows.map((r) => r.kind)).toEqual(['gateway_silent', 'gateway_back']);
   });
 
-  it('a unit that does not shut down: a hazard at once, over when it is down or shutdown is no longer asked', async () => {
+  it('a logger that is cut off: all that it reports on together', async () => {
+    live.uplink = false;
+    await live.minutes(14);
+    const found = await open();
+    expect(found).toHaveLength(1);
+    expect(found[0]).toMatchObject({ kind: 'silent', part: `logger ${plan.loggers[0]!.serial}` });
+    const cases = await openCases(found);
+    live.uplink = true;
+    await live.minutes(10);
+    expect(await open()).toEqual([]);
+    for (const ref of cases.values()) mended.set('logger: silent', ref);
+  });
+
+  it('in shutdown: a unit that goes on passing, a string that hears a neighbour, a silent unit; over when mended', async () => {
     const before = await lastEvent();
-    plant.faults.add({ kind: 'not_shutting_down', string: first, position: 5, claims: 'passing' }, atS);
-    const zone = zoneOf('A');
-    const initiator = plan.zones.find((z) => z.name === zone)!.initiator;
-    const press = async (isOpen: boolean): Promise<void> => {
-      plant.commands.setInitiator(initiator, isOpen, atS);
-      await command(site.zones.get(zone)!, isOpen ? 'initiator' : 'released', atS);
-      judge.setSite((await judgedSite(database('ingest'), site.id))!, real(atS));
-    };
-    await press(true);
-    await minutes(6);
-    expect(await open()).toMatchObject([{ kind: 'not_shutting_down', units: 1 }]);
-    await press(false);
-    await minutes(12);
-    expect((await open()).filter((c) => c.kind === 'not_shutting_down')).toEqual([]);
-    const events = await told(before);
-    expect(events[0]).toBe('opened not_shutting_down');
-    expect(events.filter((e) => /opened|closed/.test(e))).toEqual([
-      'opened not_shutting_down',
-      'closed not_shutting_down',
+    const neighbour = stringOf('B', 1).transmitters[0]!;
+    const faults: Fault[] = [
+      { kind: 'not_shutting_down', string: first, position: 5, claims: 'passing' },
+      { kind: 'cross_talk', transmitter: neighbour, strings: [second] },
+      { kind: 'unit_mute', string: stringOf('A', 3).name, position: 2 },
+    ];
+    const entries = faults.map((fault) => live.plant.faults.add(fault, live.atS));
+    await live.press(zoneOf('A'), true);
+    await live.minutes(8);
+    const found = await open();
+    expect(found.map((c) => [c.kind, c.units]).sort()).toEqual([
+      ['not_shutting_down', 1],
+      ['not_shutting_down', stringOf('A', 2).slots.length],
+      ['unconfirmed', 1],
     ]);
+    expect(found.find((c) => c.units > 1)?.part).toBe(`transmitter ${neighbour}`);
+    const cases = await openCases(found);
+    for (const entry of entries) live.plant.faults.clear(entry.id, live.atS);
+    await live.press(zoneOf('A'), false);
+    await live.minutes(12);
+    expect(await open()).toEqual([]);
+    for (const [cause, ref] of cases) {
+      await closeCase(analyst, ref, 'Mended.', live.date());
+      closed.set(`shutdown: ${cause.kind} ${cause.units}`, ref);
+    }
+    expect((await told(before)).filter((e) => /^(opened|closed) not_shutting_down$/.test(e)).sort()).toEqual([
+      'closed not_shutting_down',
+      'closed not_shutting_down',
+      'opened not_shutting_down',
+      'opened not_shutting_down',
+    ]);
+    // shutdown is tried once more: what was mended follows, which is what these cases are looked at for
+    await live.press(zoneOf('A'), true);
+    await live.minutes(6);
+    expect(await open()).toEqual([]);
+    await live.press(zoneOf('A'), false);
+    await live.minutes(12);
+    expect(await open()).toEqual([]);
+  });
+
+  it('a lost keep-alive of a whole zone is a command, no fault of its units', async () => {
+    const entry = live.plant.faults.add(
+      { kind: 'command_lost', zone: zoneOf('B'), how: 'keep_alive_lost' },
+      live.atS,
+    );
+    await live.command(zoneOf('B'), 'keep_alive_lost');
+    await live.minutes(8);
+    expect(await open()).toEqual([]);
+    live.plant.faults.clear(entry.id, live.atS);
+    await live.command(zoneOf('B'), 'released');
+    await live.minutes(8);
+    expect(await open()).toEqual([]);
+  });
+
+  it('the next day: what is well again held; what came again is opened again, once', async () => {
+    for (const [name, ref] of mended) {
+      await closeCase(analyst, ref, 'Mended.', live.date());
+      closed.set(name, ref);
+    }
+    const again = live.plant.faults.add(
+      { kind: 'stuck', string: first, position: 3, at: 'now' },
+      live.atS + 60,
+    );
+    live.sleepUntil(23.5);
+    await live.minutes(20);
+    expect((await open()).map((c) => c.headline)).toEqual([`Unit 3 of ${first} is stuck in shutdown`]);
+    expect(await checkClosedCases(live.date())).toEqual({ checked: closed.size, reopened: 1 });
+    const outcomes = new Map<string, string | null>();
+    for (const [name, ref] of closed) outcomes.set(name, (await readCase(analyst, ref, live.date())).outcome);
+    expect(Object.fromEntries(outcomes)).toEqual(
+      Object.fromEntries(
+        [...closed.keys()].map((name) => [name, name === 'units: stuck' ? 'not_held' : 'held']),
+      ),
+    );
+    const stuck = closed.get('units: stuck') ?? '';
+    expect((await readCase(analyst, stuck, live.date())).state).toBe('open');
+
+    live.plant.faults.clear(again.id, live.atS);
+    await live.minutes(12);
+    expect(await open()).toEqual([]);
+    await closeCase(analyst, stuck, 'The unit was replaced.', live.date());
+    const later = new Date(live.date().getTime() + 60_000);
+    expect(await checkClosedCases(later)).toEqual({ checked: 0, reopened: 0 });
+  });
+});
+
+describe('a month without data', { timeout: 300_000 }, () => {
+  it('is one cause, however many nights are judged meanwhile; what was low before is not over', async () => {
+    const { site } = live;
+    const beganAt = live.date();
+    const days = 31;
+    // a string that was low by then
+    await db.owner.query(
+      `insert into cause (site_id, key, kind, headline, evidence, confidence, units, string_ids, since, opened_at, changed_at,
+         loss_wh_day, loss_wh, loss_until)
+       values ($1, 'low_output:before', 'low_output', 'Low before', 'x', 0.9, $2, $3, $4, $4, $4, 900, 1800, $4)`,
+      [
+        site.id,
+        JSON.stringify([
+          {
+            stringId: site.strings.get(plan.strings[0]!.name)!.ref,
+            stringName: 'A1',
+            position: null,
+            serial: null,
+            since: beganAt,
+          },
+        ]),
+        [site.strings.get(plan.strings[0]!.name)!.id],
+        beganAt,
+      ],
+    );
+    await tellAll(beganAt);
+    await db.owner.query('truncate notice, notice_subject, message cascade');
+    const before = await lastEvent();
+
+    live.uplink = false;
+    await live.minutes(14);
+    await live.silence(days * 24, 6, async (at) => {
+      await setRollupWatermark(database('ingest'), at);
+      for (const night of await nightsDue(at)) await judgeNight(night.siteId, night.day, at);
+      await tellAll(at);
+      await tellGathered(at);
+    });
+    const causes = await open();
+    expect(causes.map((c) => c.kind)).toEqual(['low_output', 'silent']);
+    // the logger was cut off the day before as well: it is that cause again, told once
+    expect(await told(before)).toEqual(['reopened silent']);
   });
 });
