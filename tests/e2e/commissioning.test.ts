@@ -7,6 +7,7 @@ import { testDatabase, type TestDatabase } from '../support/database';
 import { testFleet, type TestFleet } from '../support/fleet';
 import { startPlant } from '../support/plant';
 import { startSite, type RunningSite } from '../support/server';
+import { press } from '../support/keyboard';
 
 /**
  * The first day of a site, as three people see it: a technician calls the roll, opens and closes the initiator on
@@ -82,7 +83,7 @@ describe('the first day of a site', () => {
   });
 
   it('does not start without a name and without somebody on site', async () => {
-    await roll.getByRole('button', { name: 'Start the roll call' }).click();
+    await press(roll.getByRole('button', { name: 'Start the roll call' }));
     await expect
       .poll(() => roll.getByRole('alert').allInnerTexts(), SHORT)
       .toEqual(['Enter the name of the person who is on site.', 'Confirm that this person is on site now.']);
@@ -91,8 +92,8 @@ describe('the first day of a site', () => {
 
   it('is started by a named person on site, and the count rises without reload', async () => {
     await roll.getByLabel('Who is on site').fill('Per Aalto');
-    await roll.getByLabel('This person is on site now').check();
-    await roll.getByRole('button', { name: 'Start the roll call' }).click();
+    await press(roll.getByLabel('This person is on site now'));
+    await press(roll.getByRole('button', { name: 'Start the roll call' }));
     await roll.getByRole('heading', { name: 'The roll call is running' }).waitFor();
     expect(await roll.locator('#run').innerText()).toContain('On site: Per Aalto');
 
@@ -190,7 +191,7 @@ describe('the first day of a site', () => {
   });
 
   it('stops when the technician stops it', async () => {
-    await roll.getByRole('button', { name: 'Stop the roll call' }).click();
+    await press(roll.getByRole('button', { name: 'Stop the roll call' }));
     await roll.getByRole('heading', { name: 'Start the roll call again' }).waitFor();
     await expect.poll(() => truth().loggers.every((l) => !l.listening), SHORT).toBe(true);
     expect(await roll.locator('header').last().innerText()).toContain('Bram Ottersley');

@@ -5,6 +5,7 @@ import { hydrated, signInOn, startBrowser } from '../support/browser';
 import { testDatabase, type TestDatabase } from '../support/database';
 import { testFleet } from '../support/fleet';
 import { startSite, type RunningSite } from '../support/server';
+import { press } from '../support/keyboard';
 
 /** An analyst imports the readings of an earlier logger and takes them back; a technician changes a logger's token. */
 let db: TestDatabase;
@@ -56,7 +57,7 @@ it('earlier readings: seen before they are kept, shown apart, taken back whole',
   expect(await page.getByLabel('Before decimals stands').inputValue()).toBe('comma');
   expect(await axeFaults(page)).toEqual([]);
 
-  await page.getByRole('button', { name: /^Import 127/ }).click();
+  await press(page.getByRole('button', { name: /^Import 127/ }));
   await heading(page, /127\sreadings are imported/);
   const figures = `${running.url}/sites/${site}/figures?period=2024-05`;
   const other = await page.context().newPage();
@@ -64,8 +65,8 @@ it('earlier readings: seen before they are kept, shown apart, taken back whole',
   // 31 + 32 quarters at 3.25 kW, 64 at 3.5 kW
   await other.getByRole('heading', { name: /Imported: 107\skWh on 2\sdays/ }).waitFor();
 
-  await page.getByRole('button', { name: 'Take earlier.csv back' }).click();
-  await page.getByRole('button', { name: 'Take it back' }).click();
+  await press(page.getByRole('button', { name: 'Take earlier.csv back' }));
+  await press(page.getByRole('button', { name: 'Take it back' }));
   await page.getByRole('table', { name: 'Imported files' }).getByText('taken back').waitFor();
   await other.goto(figures);
   expect(await other.getByText('Imported:').count()).toBe(0);
@@ -75,21 +76,21 @@ it('earlier readings: seen before they are kept, shown apart, taken back whole',
 it('a token: made beside the old one, shown once, and the old one ended', async () => {
   const page = await as('technician', `/sites/${site}/loggers`);
   const tokens = page.getByRole('table', { name: `Tokens of logger ${serial}` });
-  await page.getByRole('button', { name: 'Make a new token' }).click();
+  await press(page.getByRole('button', { name: 'Make a new token' }));
   await page.getByLabel('Name').fill('new cabinet');
   await page.getByLabel('The one before ends').selectOption({ label: 'in a day' });
   await page.getByLabel('Why').fill('yearly change');
-  await page.getByRole('button', { name: 'Make the token' }).click();
+  await press(page.getByRole('button', { name: 'Make the token' }));
   await page.getByText('It is shown this once.').waitFor();
   expect(await page.getByText(/^wl_[\w-]{43}$/).count()).toBe(1);
-  await page.getByRole('button', { name: 'I have it' }).click();
+  await press(page.getByRole('button', { name: 'I have it' }));
   await tokens.getByText(/ends in /).waitFor();
   expect(await tokens.getByText('new cabinet').count()).toBe(1);
   expect(await page.getByText(/^wl_/).count()).toBe(0);
 
-  await tokens.getByRole('button', { name: 'End now: this token' }).click();
+  await press(tokens.getByRole('button', { name: 'End now: this token' }));
   await page.getByLabel('Why').fill('the old logger is gone');
-  await page.getByRole('button', { name: 'End it now' }).click();
+  await press(page.getByRole('button', { name: 'End it now' }));
   await tokens.getByText(/ended$/).waitFor();
   expect(await axeFaults(page)).toEqual([]);
   await page.context().close();

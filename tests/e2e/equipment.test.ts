@@ -6,6 +6,7 @@ import { hydrated, settled, signOnTo, startBrowser } from '../support/browser';
 import { testDatabase, type TestDatabase } from '../support/database';
 import { testFleet, type TestFleet } from '../support/fleet';
 import { startSite, type RunningSite } from '../support/server';
+import { press } from '../support/keyboard';
 
 /**
  * A technician on a phone enters a module from its datasheet, imports connectors from a file with faults, and archives;
@@ -74,7 +75,7 @@ describe('a module from its datasheet, on a phone', () => {
     const page = await open('technician', '/equipment');
     await expect.poll(() => heading(page), SHORT).toMatch(/module types/);
     expect(new URL(page.url()).pathname).toBe('/equipment/modules');
-    await page.getByRole('link', { name: 'Enter a module type' }).click();
+    await press(page.getByRole('link', { name: 'Enter a module type' }));
     await page.waitForURL('**/equipment/modules/new');
     await hydrated(page);
     const curve = page.locator('#curve');
@@ -94,13 +95,13 @@ describe('a module from its datasheet, on a phone', () => {
     // a coefficient in V/K is asked about, and may not be saved unanswered
     await field(page, 'Coefficient of voc').fill('-0.097');
     await page.getByText('if the sheet says 0.097 V/K, type −0.259 %/K').waitFor();
-    await page.getByRole('button', { name: 'Save the module type' }).click();
+    await press(page.getByRole('button', { name: 'Save the module type' }));
     await page.getByText('Decide what is worth a second look').waitFor();
     await faultless(page);
     await field(page, 'Coefficient of voc').fill('-0.259');
     await field(page, 'Maximum series fuse').fill('25');
 
-    await page.getByRole('button', { name: 'Save the module type' }).click();
+    await press(page.getByRole('button', { name: 'Save the module type' }));
     await page.getByText('Mono 410, 108 half cells is saved').waitFor();
     await page.waitForURL(/\/equipment\/modules\/[0-9a-f-]{36}$/);
     await faultless(page);
@@ -113,10 +114,10 @@ describe('a module from its datasheet, on a phone', () => {
 
   it('is archived and found again among the archived', async () => {
     const page = await open('technician', '/equipment/modules');
-    await page.getByRole('link', { name: 'Mono 410, 108 half cells' }).click();
+    await press(page.getByRole('link', { name: 'Mono 410, 108 half cells' }));
     await page.waitForURL('**/equipment/modules/*-*');
     await hydrated(page);
-    await page.getByRole('button', { name: 'Archive' }).click();
+    await press(page.getByRole('button', { name: 'Archive' }));
     await page.getByText('This type is archived').waitFor();
     await page.goto(`${site.url}/equipment/modules`);
     await hydrated(page);
@@ -147,12 +148,12 @@ describe('connectors from a file', () => {
 
     const rows = page.locator('#pasted');
     await rows.fill((await rows.inputValue()).replace(';;15000;thirty', ';S2;1000;30'));
-    await page.getByRole('button', { name: 'Look again' }).click();
+    await press(page.getByRole('button', { name: 'Look again' }));
     await expect.poll(() => heading(page), SHORT).toBe('Two new, 1 to change');
     await page.getByText('Maximum current: 35 → 40').waitFor();
-    await page.getByRole('button', { name: 'Import 3 rows' }).click();
+    await press(page.getByRole('button', { name: 'Import 3 rows' }));
     await expect.poll(() => heading(page), SHORT).toBe('Two new, 1 changed');
-    await page.getByRole('link', { name: 'To the list' }).click();
+    await press(page.getByRole('link', { name: 'To the list' }));
     await page.getByRole('link', { name: 'Sedge 2' }).waitFor();
     await page.close();
   });
@@ -178,17 +179,17 @@ describe('two people and one type', () => {
     const second = await open('technician', href);
     await field(first, 'Maximum current').fill('18');
     await first.getByText('10 strings at 1 site rest on this type').waitFor();
-    await first.getByRole('button', { name: 'Save the change' }).click();
+    await press(first.getByRole('button', { name: 'Save the change' }));
     await first.getByText('Shutdown unit is saved').waitFor();
     await field(second, 'Maximum input voltage').fill('75');
-    await second.getByRole('button', { name: 'Save the change' }).click();
+    await press(second.getByRole('button', { name: 'Save the change' }));
     await second.getByText('Somebody else saved this type first').waitFor();
     await second.getByText('Orla Nettlebeck changed this type').waitFor();
     await second.getByText('Saved by somebody else: 18').waitFor();
     expect(await field(second, 'Maximum input voltage').inputValue()).toBe('75');
     await faultless(second);
     await field(second, 'Maximum current').fill('18');
-    await second.getByRole('button', { name: 'Save mine over it' }).click();
+    await press(second.getByRole('button', { name: 'Save mine over it' }));
     await second.getByText('Shutdown unit is saved').waitFor();
     await first.reload();
     await hydrated(first);
@@ -201,7 +202,7 @@ describe('two people and one type', () => {
   it('who may only read sees the form and can’t save', async () => {
     const page = await open('analyst', '/equipment/inverters');
     expect(await page.getByRole('link', { name: /Enter a/ }).count()).toBe(0);
-    await page.getByRole('link', { name: 'Roof inverter 20 kW, 4 inputs' }).click();
+    await press(page.getByRole('link', { name: 'Roof inverter 20 kW, 4 inputs' }));
     await page.waitForURL('**/equipment/inverters/*-*');
     await hydrated(page);
     expect(await field(page, 'Maximum DC voltage').isDisabled()).toBe(true);
@@ -226,9 +227,9 @@ describe('design checks', () => {
     await before.close();
 
     const page = await open('manager', '/equipment/connectors');
-    await page.getByRole('button', { name: 'Record a documented pair' }).click();
+    await press(page.getByRole('button', { name: 'Record a documented pair' }));
     const dialog = page.getByRole('dialog');
-    await dialog.getByRole('button', { name: 'Record the pair' }).click();
+    await press(dialog.getByRole('button', { name: 'Record the pair' }));
     await dialog.getByText('Name the document.').waitFor();
     const choose = async (label: string, name: RegExp) => {
       const options = await dialog.getByLabel(label).locator('option').allInnerTexts();
@@ -245,11 +246,11 @@ describe('design checks', () => {
         .setInputFiles({ name, mimeType: 'application/pdf', buffer: Buffer.from(body) });
     await evidence('statement.pdf', '<html>not what its name says</html>');
     await faultless(page);
-    await dialog.getByRole('button', { name: 'Record the pair' }).click();
+    await press(dialog.getByRole('button', { name: 'Record the pair' }));
     await dialog.getByText('The pair is recorded, its document is not here yet').waitFor();
     await dialog.getByText('This is a web page, whatever its name says').waitFor();
     await evidence('statement.pdf', '%PDF-1.4\n%%EOF\n');
-    await dialog.getByRole('button', { name: 'Send the document again' }).click();
+    await press(dialog.getByRole('button', { name: 'Send the document again' }));
     await page
       .getByText('Joint statement of both makers, edition 2, page 4')
       .locator('visible=true')

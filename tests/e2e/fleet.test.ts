@@ -5,6 +5,7 @@ import { testDatabase, type TestDatabase } from '../support/database';
 import { testFleet, type TestFleet } from '../support/fleet';
 import { startSite, type RunningSite } from '../support/server';
 import { command, stand } from '../support/standing';
+import { press } from '../support/keyboard';
 
 /** An analyst at the fleet: filters in the address, keys, search, a hazard taken on, what a site has to tell. */
 const SCHOOL = 'Kestrel Row School';
@@ -72,7 +73,7 @@ describe('the fleet', () => {
     expect(await rows()).toBe(1);
     expect(await page.getByRole('link', { name: 'CSV' }).getAttribute('href')).toContain('q=clinic');
     await page.getByRole('searchbox', { name: 'Filter sites by name or place' }).fill('nowhere');
-    await page.getByRole('button', { name: 'Show all sites' }).click();
+    await press(page.getByRole('button', { name: 'Show all sites' }));
     await expect.poll(rows, SOON).toBe(3);
   });
 
@@ -90,7 +91,7 @@ describe('the fleet', () => {
 
   it('puts a name to a hazard and brings up whom to call', async () => {
     await open('/');
-    await page.getByRole('button', { name: 'Acknowledge and call the site' }).click();
+    await press(page.getByRole('button', { name: 'Acknowledge and call the site' }));
     await page.getByRole('link', { name: 'Call +00 555 0102' }).waitFor();
     await expect
       .poll(() => page.evaluate(() => document.activeElement?.getAttribute('href')), SOON)

@@ -12,6 +12,7 @@ import { hydrated, settled, startBrowser } from '../support/browser';
 import { testDatabase, type TestDatabase } from '../support/database';
 import { PASSWORD, testFleet } from '../support/fleet';
 import { signInAt, startSite, type RunningSite } from '../support/server';
+import { press } from '../support/keyboard';
 
 /** A new roof: strings from a spreadsheet, the last serials read on the roof, the strings laid on the plan. */
 let db: TestDatabase;
@@ -151,23 +152,23 @@ describe('strings and serials from a file', () => {
       .getByLabel('A file: CSV or tab-separated')
       .setInputFiles({ name: 'strings.csv', mimeType: 'text/csv', buffer: bytes });
     await page.getByText('Windows-1252').waitFor();
-    await page.getByLabel('Blank string cells mean the string above').check();
+    await press(page.getByLabel('Blank string cells mean the string above'));
     await page.getByLabel('plane “Süd”').selectOption('South roof');
-    await page.getByRole('button', { name: 'Make them' }).click();
+    await press(page.getByRole('button', { name: 'Make them' }));
     await page.getByLabel('Unit type', { exact: true }).selectOption('Reporting unit, output side');
     await page.getByLabel('Module type', { exact: true }).selectOption('Mono 430, 108 half cells');
     await eventually(() => page.locator('h1').innerText()).toMatch(/^\d cells of 12 rows need a look/);
     expect(await axeFaults(page)).toEqual([]);
-    await page.getByRole('button', { name: `Write ${RUN}-K1-3` }).click();
+    await press(page.getByRole('button', { name: `Write ${RUN}-K1-3` }));
     await page.getByLabel('Cell in row 6, position').fill('5');
     await page.getByLabel('Cell in row 6, position').press('Enter');
 
     await eventually(() => page.locator('h1').innerText()).toBe('12 rows would make 12 changes');
-    await page.getByRole('button', { name: 'Import 12 rows' }).click();
+    await press(page.getByRole('button', { name: 'Import 12 rows' }));
     await page.getByText('Say why, in a few words').waitFor();
     await page.getByLabel('Why', { exact: true }).fill('List of the installer');
     expect(await axeFaults(page)).toEqual([]);
-    await page.getByRole('button', { name: 'Import 12 rows' }).click();
+    await press(page.getByRole('button', { name: 'Import 12 rows' }));
     await eventually(() => page.locator('h1').innerText()).toBe('12 rows are in the as-built');
     expect(await serialsOf(page.request, 'K1')).toEqual([1, 2, 3, 4, 5, 6].map((n) => `${RUN}-K1-${n}`));
     expect(await serialsOf(page.request, 'K2')).toEqual([

@@ -7,6 +7,7 @@ import { testDatabase, type TestDatabase } from '../support/database';
 import { testFleet, type TestFleet } from '../support/fleet';
 import { startSite, type RunningSite } from '../support/server';
 import { stand } from '../support/standing';
+import { press } from '../support/keyboard';
 
 const CLINIC = 'Weirside Clinic';
 const SECRET = 'ladder gate seven rivers';
@@ -34,13 +35,13 @@ async function invite(role: Role, email: string): Promise<string> {
   const page = await desk.newPage();
   await page.goto(`${site.url}/people`);
   await hydrated(page);
-  await page.getByRole('button', { name: 'Invite somebody' }).click();
+  await press(page.getByRole('button', { name: 'Invite somebody' }));
   const dialog = page.getByRole('dialog');
   await dialog.getByLabel('E-mail').fill(email);
   await dialog.getByLabel('Name').fill(`New ${role}`);
-  await dialog.getByRole('radio', { name: new RegExp(`^${role}|${role}:`, 'i') }).check();
-  if (role === 'customer') await dialog.getByRole('checkbox', { name: CLINIC }).check();
-  await dialog.getByRole('button', { name: /^(Send|Invite)/ }).click();
+  await press(dialog.getByRole('radio', { name: new RegExp(`^${role}|${role}:`, 'i') }));
+  if (role === 'customer') await press(dialog.getByRole('checkbox', { name: CLINIC }));
+  await press(dialog.getByRole('button', { name: /^(Send|Invite)/ }));
   await page.getByText(email).first().waitFor();
   await page.close();
   const { rows } = await db.owner.query<{ text: string }>(
@@ -99,7 +100,7 @@ async function report(page: Page): Promise<void> {
   await box.scrollIntoViewIfNeeded();
   await page.locator('astro-island[client="visible"][ssr]').first().waitFor({ state: 'detached' });
   await box.fill(words);
-  await page.getByRole('button', { name: /^Send to/ }).click();
+  await press(page.getByRole('button', { name: /^Send to/ }));
   await page.getByRole('list', { name: 'What you reported' }).getByText(words).waitFor();
   expect(await box.inputValue()).toBe('');
   const { rows } = await db.owner.query(

@@ -6,6 +6,7 @@ import { testDatabase, type TestDatabase } from '../support/database';
 import { testFleet } from '../support/fleet';
 import { phoneOf } from '../support/phone';
 import { startSite, type RunningSite } from '../support/server';
+import { press } from '../support/keyboard';
 
 /** On a roof with a phone: 14 shutdown-only units, keep-alive off, bright, and a meter that says 7.8 V. */
 let db: TestDatabase;
@@ -92,7 +93,7 @@ describe('a reading on a phone', () => {
     expect(await answer(page)).toContain('All 14 units are in shutdown');
     expect(await page.locator('main').innerText()).toContain('Shutdown is not isolation.');
     await page.getByLabel('Reading + to −, volts').fill('8,4');
-    await page.getByRole('button', { name: 'Say what it means' }).click();
+    await press(page.getByRole('button', { name: 'Say what it means' }));
     await page.waitForURL(/v=8%2C4/);
     expect(await answer(page)).toContain('As expected');
     await context.close();

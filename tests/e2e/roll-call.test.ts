@@ -7,6 +7,7 @@ import { testDatabase, type TestDatabase } from '../support/database';
 import { testFleet, type TestFleet } from '../support/fleet';
 import { startPlant } from '../support/plant';
 import { startSite, type RunningSite } from '../support/server';
+import { press } from '../support/keyboard';
 
 /**
  * What a roll call leaves to do, on a phone: a roll call started by a plain form, a stranger placed where its label was
@@ -75,11 +76,11 @@ describe('a roll call on a phone', () => {
     const form = await bare.newPage();
     await form.goto(at('roll-call'));
     await form.getByLabel('Who is on site').fill('Per Aalto');
-    await form.getByRole('button', { name: 'Start the roll call' }).click();
+    await press(form.getByRole('button', { name: 'Start the roll call' }));
     await form.locator('#run').getByText('Confirm that this person is on site now.').waitFor();
     expect(await form.getByLabel('Who is on site').inputValue()).toBe('Per Aalto');
-    await form.getByLabel('This person is on site now').check();
-    await form.getByRole('button', { name: 'Start the roll call' }).click();
+    await press(form.getByLabel('This person is on site now'));
+    await press(form.getByRole('button', { name: 'Start the roll call' }));
     await form.locator('#run').getByText('On site: Per Aalto').waitFor();
     await bare.close();
   });
@@ -89,20 +90,20 @@ describe('a roll call on a phone', () => {
     await hydrated(page);
     await expect.poll(() => page.locator('#unknown li').count(), LONG).toBe(2);
     const stranger = strangerAt(2);
-    await page.getByRole('button', { name: `Place ${stranger}` }).click();
+    await press(page.getByRole('button', { name: `Place ${stranger}` }));
     const dialog = page.getByRole('dialog');
     await expect.poll(() => dialog.innerText(), LONG).toContain('B1, position 2');
     expect(await dialog.innerText()).toContain('one character apart');
-    await dialog.getByRole('button', { name: 'Take B1' }).click();
+    await press(dialog.getByRole('button', { name: 'Take B1' }));
     const write = dialog.getByRole('button', { name: `Replace ${drawn('B1', 2)}` });
-    await write.click();
+    await press(write);
     // what was seen on the module, why, and the physical check
     await expect.poll(() => dialog.getByRole('alert').count(), SHORT).toBe(3);
     expect(await axeFaults(page)).toEqual([]);
     await dialog.getByLabel('What you read on the module').fill(`label reads ${stranger}, third row`);
     await dialog.getByLabel('Why').fill('copied wrongly');
-    await dialog.getByLabel('I have read').check();
-    await write.click();
+    await press(dialog.getByLabel('I have read'));
+    await press(write);
     await page.getByText('The unit is replaced').waitFor();
     expect(await serialAt('B1', 2)).toBe(stranger);
     await expect.poll(() => page.locator('#unknown li').count(), SHORT).toBe(1);
@@ -119,19 +120,19 @@ describe('a roll call on a phone', () => {
 
   it('leads to the walk: stops to tick, kept across a reload, a ladder card of one screen', async () => {
     await expect.poll(() => heading(page), LONG).toContain('182 of 184');
-    await page.getByRole('link', { name: 'Walk to them' }).click();
+    await press(page.getByRole('link', { name: 'Walk to them' }));
     await page.waitForURL(/walk$/);
     await hydrated(page);
     expect(await heading(page)).toBe('Two stops on two planes');
     expect(plain(await page.locator('header p').last().innerText())).toMatch(/B1-9.*C2-7|C2-7.*B1-9/);
     const roof = page.locator('#roof svg[role="img"]:visible');
     expect(await roof.getAttribute('aria-label')).toContain('B1: 9 unheard');
-    await page.getByLabel('B1-9 is done').check();
+    await press(page.getByLabel('B1-9 is done'));
     await page.reload();
     await hydrated(page);
     await expect.poll(() => page.getByLabel('B1-9 is done').isChecked(), SHORT).toBe(true);
     expect(await axeFaults(page)).toEqual([]);
-    await page.getByRole('button', { name: 'Leave out B1-9' }).click();
+    await press(page.getByRole('button', { name: 'Leave out B1-9' }));
     await expect.poll(() => heading(page), SHORT).toBe('One stop on the east roof');
     await page.waitForURL(/stops=C2-7/);
 
@@ -160,17 +161,17 @@ describe('two units in each other’s place', () => {
   it('are found when a person isolates one string: who kept its current, who fell with it', async () => {
     const option = page.locator('#isolate-string option', { hasText: /^C3\b/ });
     await page.getByLabel('String to isolate').selectOption((await option.getAttribute('value')) ?? '');
-    await page.getByRole('button', { name: 'Start watching' }).click();
+    await press(page.getByRole('button', { name: 'Start watching' }));
     await expect.poll(() => page.getByRole('alert').count(), SHORT).toBe(2);
     await page.getByLabel('Who isolates it').fill('Per Aalto');
-    await page.getByLabel('A qualified person').check();
-    await page.getByRole('button', { name: 'Start watching' }).click();
+    await press(page.getByLabel('A qualified person'));
+    await press(page.getByRole('button', { name: 'Start watching' }));
     await expect.poll(() => heading(page), SHORT).toBe('Watching C3: nothing has fallen yet');
 
     const id = plant.inject(HALL, { kind: 'string_isolated', string: 'C3' });
     await expect.poll(() => heading(page), LONG).toBe('C3-4 kept its current; D1-4 went to zero with C3');
     expect(await axeFaults(page)).toEqual([]);
-    await page.getByRole('button', { name: 'Stop watching and keep the result' }).click();
+    await press(page.getByRole('button', { name: 'Stop watching and keep the result' }));
     await page.locator('#isolations').waitFor();
     plant.clear(HALL, id);
     const { rows } = await db.owner.query<{ person_on_site: string; outcome: string }>(
@@ -186,8 +187,8 @@ describe('two units in each other’s place', () => {
     expect(await dialog.innerText()).toContain('from its string');
     await dialog.getByLabel('What you read on the module').fill('both labels read at their modules');
     await dialog.getByLabel('Why').fill('isolating C3 showed it');
-    await dialog.getByLabel('I have read both labels').check();
-    await dialog.getByRole('button', { name: 'Exchange the two units' }).click();
+    await press(dialog.getByLabel('I have read both labels'));
+    await press(dialog.getByRole('button', { name: 'Exchange the two units' }));
     await page.getByText('The two units are exchanged on the as-built').waitFor();
     expect([await serialAt('C3', 4), await serialAt('D1', 4)]).toEqual([d, c]);
     const seat = plant.truth(HALL).units.find((u) => u.serial === d)?.seat;

@@ -7,6 +7,7 @@ import { testDatabase, type TestDatabase } from '../support/database';
 import { PASSWORD, SECRET, testFleet, type TestFleet } from '../support/fleet';
 import { noonEverywhere } from '../support/noon';
 import { startSite, type RunningSite } from '../support/server';
+import { press } from '../support/keyboard';
 
 /**
  * A shutdown test on a phone, from the first name to the signature: the plant's initiator is operated on the plant's own
@@ -69,16 +70,20 @@ async function operate(open: boolean): Promise<void> {
 /** Types what the meter at the inverter's end of a home run shows, and the seconds of a stopwatch where one is read. */
 async function readMeter(string: string, moment: 'before' | 'after', stopwatchS?: number): Promise<void> {
   const volts = plant.truth(CLINIC).strings.find((s) => s.name === string)?.homeRun ?? 0;
-  await button(
-    moment === 'before' ? `Read before the command: ${string}` : `Add reading of ${string} after the command`,
-  ).click();
+  await press(
+    button(
+      moment === 'before'
+        ? `Read before the command: ${string}`
+        : `Add reading of ${string} after the command`,
+    ),
+  );
   const dialog = page.getByRole('dialog');
   await dialog.getByLabel('+ to −', { exact: true }).fill(volts.toFixed(1));
   await dialog.getByLabel('+ to earth', { exact: true }).fill((volts / 2).toFixed(1).replace('.', ','));
   await dialog.getByLabel('− to earth', { exact: true }).fill((-volts / 2).toFixed(1));
   if (stopwatchS !== undefined)
     await dialog.getByLabel('Read so long after the command').fill(String(stopwatchS));
-  await dialog.getByRole('button', { name: 'Save this reading' }).click();
+  await press(dialog.getByRole('button', { name: 'Save this reading' }));
   await dialog.waitFor({ state: 'hidden' });
 }
 async function plan(): Promise<void> {
@@ -87,19 +92,19 @@ async function plan(): Promise<void> {
   await page.getByLabel('Serial number').fill('HB-20881');
   await page.getByLabel('Rated voltage').fill('1500');
   await page.getByLabel('Calibrated on').fill('2026-05-04');
-  await page.getByLabel('Proved on a known source just now').check();
+  await press(page.getByLabel('Proved on a known source just now'));
 }
 async function accept(): Promise<void> {
-  await page.getByLabel('I have read this').check();
-  await button('Accept and go on').click();
-  await button('Start watching').click();
+  await press(page.getByLabel('I have read this'));
+  await press(button('Accept and go on'));
+  await press(button('Start watching'));
 }
 /** Enters a password and signs; gives the answer's status. */
 async function trySigning(password: string): Promise<number> {
   await page.getByLabel('Your password again').fill(password);
   const [answer] = await Promise.all([
     page.waitForResponse((r) => r.url().endsWith('/sign')),
-    button('Sign this test').click(),
+    press(button('Sign this test')),
   ]);
   return answer.status();
 }
@@ -115,14 +120,14 @@ describe('a shutdown test on a phone', { timeout: 240_000 }, () => {
     await hydrated(page);
     expect(await heading()).toBe('Whole roof has not been tested');
     expect(await axeFaults(page)).toEqual([]);
-    await button('Start the test').click();
+    await press(button('Start the test'));
     await page.waitForURL(/shutdown-test\/[0-9a-f-]{36}$/);
     await hydrated(page);
   });
 
   it('asks for names and the instrument, says what is missing, and keeps what was typed over a reload', async () => {
     await page.getByLabel('Who operates the initiator').fill('Ivo');
-    await button('Save and read the caution').click();
+    await press(button('Save and read the caution'));
     await page.getByRole('alert').filter({ hasText: 'Enter make and model of the instrument.' }).waitFor();
     await page.reload();
     await hydrated(page);
@@ -131,11 +136,11 @@ describe('a shutdown test on a phone', { timeout: 240_000 }, () => {
     await settled(page);
     expect(await axeFaults(page)).toEqual([]);
     expect(await page.evaluate(() => document.documentElement.scrollWidth)).toBeLessThanOrEqual(390);
-    await button('Save and read the caution').click();
+    await press(button('Save and read the caution'));
   });
 
   it('has the caution read and accepted, and offers no switch anywhere', async () => {
-    await button('Accept and go on').click();
+    await press(button('Accept and go on'));
     await page.getByText('Read the points, then tick the box.').waitFor();
     expect(await axeFaults(page)).toEqual([]);
     await accept();
@@ -151,7 +156,7 @@ describe('a shutdown test on a phone', { timeout: 240_000 }, () => {
     await readMeter('A1', 'before');
     await readMeter('A3', 'before');
     await operate(true);
-    await button(/^Initiator operated now/).click();
+    await press(button(/^Initiator operated now/));
     await expect.poll(() => page.locator('#strings').innerText(), LONG).toMatch(/30 V or less after \d+ s/);
     await phone.setOffline(true);
     await expect
@@ -181,10 +186,10 @@ describe('a shutdown test on a phone', { timeout: 240_000 }, () => {
 
   it('watches the return, and gives a verdict for string and unit', async () => {
     await operate(false);
-    await button(/^Initiator released again now/).click();
+    await press(button(/^Initiator released again now/));
     await page.getByText(/95 of 95 units that went have come back/).waitFor({ timeout: 120_000 });
-    await button('End this round').click();
-    await button('Go to the verdict').click();
+    await press(button('End this round'));
+    await press(button('Go to the verdict'));
     const live = page.getByRole('region', { name: 'Treat as live: A3' });
     expect(plain(await live.innerText())).toContain('1 unit kept passing: position 4');
     // no reading decides before the meter is proved again
@@ -213,25 +218,25 @@ describe('a shutdown test on a phone', { timeout: 240_000 }, () => {
   it('is repeated for the failed string only, and the newer one supersedes', async () => {
     const first = page.url();
     plant.clear(CLINIC, faultId);
-    await button('Repeat for what is open').click();
+    await press(button('Repeat for what is open'));
     await page.waitForURL((url) => url.href !== first && /shutdown-test\/[0-9a-f-]{36}$/.test(url.pathname));
     await hydrated(page);
     expect(await page.getByLabel('Who operates the initiator').inputValue()).toBe('Ivo Brandt');
     expect(await page.getByRole('checkbox', { checked: true, name: /^A\d$/ }).count()).toBe(1);
-    await page.getByLabel('Proved on a known source just now').check();
-    await button('Save and read the caution').click();
+    await press(page.getByLabel('Proved on a known source just now'));
+    await press(button('Save and read the caution'));
     await accept();
     await readMeter('A3', 'before');
     await operate(true);
-    await button(/^Initiator operated now/).click();
+    await press(button(/^Initiator operated now/));
     await expect
       .poll(() => plant.truth(CLINIC).strings.find((s) => s.name === 'A3')!.homeRun < 20, LONG)
       .toBe(true);
     await readMeter('A3', 'after', 24);
     await operate(false);
-    await button(/^Initiator released again now/).click();
-    await button('End this round').click();
-    await button('Go to the verdict').click();
+    await press(button(/^Initiator released again now/));
+    await press(button('End this round'));
+    await press(button('Go to the verdict'));
     await page.getByText('It read the known source right').click();
     await expect
       .poll(async () => plain(await page.locator('#results').innerText()), SHORT)

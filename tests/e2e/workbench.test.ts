@@ -7,6 +7,7 @@ import { testFleet, type TestFleet } from '../support/fleet';
 import { startSite, type RunningSite } from '../support/server';
 import { stand } from '../support/standing';
 import { judgeLow, reportHours } from '../support/workbench-scene';
+import { press } from '../support/keyboard';
 
 /** An analyst goes from the list of low strings to one of them and hands on what they saw. */
 const HALL = 'Old Tannery Market Hall';
@@ -60,13 +61,13 @@ describe('from a low string to a link that shows what was seen', () => {
     await page.goto(`${site.url}/low-output?case=none`);
     await hydrated();
     await page.getByRole('heading', { name: 'One of 2 strings makes less than it should' }).waitFor();
-    await page.getByRole('button', { name: 'Save this view' }).click();
+    await press(page.getByRole('button', { name: 'Save this view' }));
     await page.getByLabel('Name of the view').fill('Not taken up');
-    await page.getByRole('button', { name: 'Save the view' }).click();
+    await press(page.getByRole('button', { name: 'Save the view' }));
     await page.getByRole('link', { name: 'Not taken up' }).waitFor();
     expect(await page.getByRole('link', { name: 'Open a case' }).getAttribute('href')).toContain('string=');
     expect(await faultsShown(page, 'low strings', 1440)).toEqual([]);
-    await page.getByRole('link', { name: 'B3', exact: true }).click();
+    await press(page.getByRole('link', { name: 'B3', exact: true }));
     await page.waitForURL(/\/strings\//);
   });
 
@@ -108,13 +109,13 @@ describe('from a low string to a link that shows what was seen', () => {
     await page.locator('#units-chosen').getByText('Position 7', { exact: true }).first().waitFor();
     const notes = page.locator('#notes');
     await notes.scrollIntoViewIfNeeded();
-    await notes.getByRole('button', { name: 'Pin a note' }).click();
+    await press(notes.getByRole('button', { name: 'Pin a note' }));
     await notes.getByLabel('Note').fill(NOTE);
-    await notes.getByRole('button', { name: 'Pin the note' }).click();
+    await press(notes.getByRole('button', { name: 'Pin the note' }));
     await notes.locator('li', { hasText: NOTE }).waitFor();
     expect(await faultsShown(page, 'a string', 1440)).toEqual([]);
     const title = await page.locator('#staircase-title').innerText();
-    await page.getByRole('button', { name: 'Copy link' }).click();
+    await press(page.getByRole('button', { name: 'Copy link' }));
     await page.getByRole('button', { name: 'Link copied' }).waitFor();
     const link = await page.evaluate(() => navigator.clipboard.readText());
     expect(link).toMatch(/on=\d{4}-\d{2}-\d{2}&at=\d+&units=5%2C7%2C9/);

@@ -1,5 +1,6 @@
 import type { Page } from 'playwright-core';
 import { hydrated } from './browser';
+import { press } from './keyboard';
 
 /** A new site by forms, from its name to a serial in every slot, as a person would do it. */
 
@@ -33,7 +34,7 @@ export async function buildSite(
   // nothing filled in: every fault at its field, and what was typed stays
   await page.fill('[name="place"]', 'Saltmarsh');
   await page.fill('[name="longitude"]', '181');
-  await page.getByRole('button', { name: 'Create the site' }).click();
+  await press(page.getByRole('button', { name: 'Create the site' }));
   await page.locator('[name="name"][aria-invalid="true"]').waitFor();
   await look(page, 'new-site-faults');
   await page.fill('[name="name"]', siteName);
@@ -43,12 +44,12 @@ export async function buildSite(
   await page.fill('[name="temperatureMin"]', '−9');
   await page.fill('[name="shutdownSwitchPlace"]', 'Beside the slipway door');
   await page.fill('[name="contactName"]', 'Idony Marrable');
-  await page.getByRole('button', { name: 'Create the site' }).click();
+  await press(page.getByRole('button', { name: 'Create the site' }));
   await page.waitForURL('**/as-built');
   await hydrated(page);
   await look(page, 'as-built-empty');
 
-  await page.getByRole('button', { name: 'Add a plane' }).first().click();
+  await press(page.getByRole('button', { name: 'Add a plane' }).first());
   await field(page, 'name').fill('South roof');
   await field(page, 'surfaceTilt').fill('12');
   await field(page, 'surfaceAzimuth').fill('185');
@@ -56,23 +57,23 @@ export async function buildSite(
   await field(page, 'surfaceAzimuth').press('Enter');
   await saved(page);
 
-  await page.getByRole('button', { name: 'Add an inverter' }).first().click();
+  await press(page.getByRole('button', { name: 'Add an inverter' }).first());
   await field(page, 'name').fill('Inverter 1');
   await field(page, 'acPowerMax').fill('12000');
   await field(page, 'inputs').fill('2');
   await field(page, 'inputs').press('Enter');
   await saved(page);
 
-  await page.getByRole('button', { name: 'Add a logger' }).first().click();
+  await press(page.getByRole('button', { name: 'Add a logger' }).first());
   await field(page, 'serial').fill(loggerSerial);
   await field(page, 'serial').press('Enter');
   await dialog(page).getByText('It is shown this once.').waitFor();
   const token = await dialog(page).locator('code').first().innerText();
   await look(page, 'token');
-  await dialog(page).getByRole('button', { name: 'I have it' }).click();
+  await press(dialog(page).getByRole('button', { name: 'I have it' }));
   await saved(page);
 
-  await page.getByRole('button', { name: 'Add strings' }).click();
+  await press(page.getByRole('button', { name: 'Add strings' }));
   await field(page, 'name').fill('A1');
   await field(page, 'slots').fill('4');
   await field(page, 'unitType').selectOption({ label: 'Reporting unit, both sides' });
@@ -80,14 +81,14 @@ export async function buildSite(
   await field(page, 'input').selectOption({ label: 'Inverter 1, input 1' });
   await field(page, 'alike').fill('2');
   await look(page, 'strings');
-  await dialog(page).getByRole('button', { name: 'Add the strings' }).click();
+  await press(dialog(page).getByRole('button', { name: 'Add the strings' }));
   await saved(page);
   await page
     .getByRole('heading', { level: 1, name: /2.strings, 8.slots; no slot has a serial yet/ })
     .waitFor();
 
   for (const string of ['A1', 'A2']) {
-    await page.getByRole('button', { name: string, exact: true }).click();
+    await press(page.getByRole('button', { name: string, exact: true }));
     for (let position = 1; position <= 4; position++) {
       await field(page, `slot-${position}`).fill(`${serials}-${string}-${position}`.toLowerCase());
       await page.keyboard.press('Enter'); // as a scanner does
@@ -95,15 +96,15 @@ export async function buildSite(
     if (string === 'A2') {
       // one of them sits in A1 already
       await field(page, 'slot-3').fill(`${serials}-A1-3`);
-      await dialog(page).getByRole('button', { name: 'Save the slots' }).click();
+      await press(dialog(page).getByRole('button', { name: 'Save the slots' }));
       await dialog(page).getByText('sits in A1, position 3').first().waitFor();
       await look(page, 'slots-fault');
       await field(page, 'slot-3').fill(`${serials}-A2-3`);
     }
-    await dialog(page).getByRole('button', { name: 'Save the slots' }).click();
+    await press(dialog(page).getByRole('button', { name: 'Save the slots' }));
     await dialog(page).getByText('Saved', { exact: true }).waitFor();
     await look(page, `slots-${string}`);
-    await dialog(page).getByRole('button', { name: 'Close' }).last().click();
+    await press(dialog(page).getByRole('button', { name: 'Close' }).last());
     await saved(page);
   }
   await page.getByRole('heading', { level: 1, name: /every slot has a serial/ }).waitFor();
@@ -113,16 +114,16 @@ export async function buildSite(
 
 /** Swaps two units and replaces a third: the history tells who, what and why. */
 export async function changeUnits(page: Page, { serials, look }: Journey): Promise<void> {
-  await page.getByRole('button', { name: 'A1', exact: true }).click();
+  await press(page.getByRole('button', { name: 'A1', exact: true }));
   await field(page, 'slot-1').fill(`${serials}-A1-2`);
   await field(page, 'slot-2').fill(`${serials}-A1-1`);
   await field(page, 'slot-4').fill(`${serials}-NEW`);
-  await dialog(page).getByRole('button', { name: 'Save the slots' }).click();
+  await press(dialog(page).getByRole('button', { name: 'Save the slots' }));
   await dialog(page).locator('[name="reason"][aria-invalid="true"]').waitFor();
   await field(page, 'reason').fill('labels mixed up, one cracked');
-  await dialog(page).getByRole('button', { name: 'Save the slots' }).click();
+  await press(dialog(page).getByRole('button', { name: 'Save the slots' }));
   await dialog(page).getByText('Saved', { exact: true }).waitFor();
-  await dialog(page).getByRole('link', { name: 'History' }).click();
+  await press(dialog(page).getByRole('link', { name: 'History' }));
   await page.waitForURL('**/history?string=*');
   await page.getByText('labels mixed up, one cracked').first().waitFor();
   await hydrated(page);
@@ -135,24 +136,24 @@ export async function changeUnits(page: Page, { serials, look }: Journey): Promi
 export async function meetAtOnePlane(mine: Page, theirs: Page, { look }: Journey): Promise<void> {
   await theirs.goto(mine.url());
   await hydrated(theirs);
-  const edit = (page: Page) => page.getByRole('button', { name: 'Edit plane South roof' }).click();
+  const edit = (page: Page) => press(page.getByRole('button', { name: 'Edit plane South roof' }));
   await edit(mine);
   await edit(theirs);
   await field(theirs, 'surfaceTilt').fill('15');
   await field(theirs, 'name').fill('Southern roof');
-  await dialog(theirs).getByRole('button', { name: 'Save' }).click();
+  await press(dialog(theirs).getByRole('button', { name: 'Save' }));
   await saved(theirs);
   await field(mine, 'surfaceTilt').fill('17');
-  await dialog(mine).getByRole('button', { name: 'Save' }).click();
+  await press(dialog(mine).getByRole('button', { name: 'Save' }));
   await dialog(mine)
     .getByText(/set it to "15" at \d\d:\d\d/)
     .waitFor();
   await look(mine, 'clash');
-  await dialog(mine).getByRole('button', { name: 'Keep what I typed and go on' }).click();
+  await press(dialog(mine).getByRole('button', { name: 'Keep what I typed and go on' }));
   await mine.waitForFunction(
     () => document.querySelector<HTMLInputElement>('dialog[open] [name="name"]')?.value === 'Southern roof',
   );
-  await dialog(mine).getByRole('button', { name: 'Save' }).click();
+  await press(dialog(mine).getByRole('button', { name: 'Save' }));
   await saved(mine);
   await mine.getByRole('button', { name: 'Edit plane Southern roof' }).waitFor();
 }

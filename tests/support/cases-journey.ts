@@ -1,6 +1,7 @@
 import type { Page } from 'playwright-core';
 import { expect } from 'vitest';
 import { hydrated } from './browser';
+import { press } from './keyboard';
 
 /** What an analyst does with a case in the browser; each step waits for what only the finished act shows. */
 
@@ -24,7 +25,7 @@ export async function openFromString(
   await page.getByLabel('What is wrong').fill('It gave half a volt all morning.');
   await page.getByLabel('Kind').selectOption('stuck');
   await page.getByRole('checkbox', { name: `Position 2 of ${string.name}` }).check({ force: true });
-  await page.getByRole('button', { name: 'Open the case' }).click();
+  await press(page.getByRole('button', { name: 'Open the case' }));
   await page.waitForURL(/\/cases\/[0-9a-f-]{36}$/);
   await hydrated(page);
   await page
@@ -35,7 +36,7 @@ export async function openFromString(
 
 export async function checkFirstLine(page: Page): Promise<void> {
   const list = page.locator('#checklist');
-  await list.getByRole('checkbox').first().click();
+  await press(list.getByRole('checkbox').first());
   await list.getByText('Looked at by').waitFor();
   await list.getByText('1 of 6 looked at').waitFor();
 }
@@ -70,19 +71,19 @@ export async function assign(page: Page, name: string): Promise<void> {
 export async function meetAtOneCase(page: Page, other: Page, address: string): Promise<void> {
   await openPage(other, address);
   await page.keyboard.press('Escape');
-  await page.getByRole('button', { name: 'Change', exact: true }).click();
+  await press(page.getByRole('button', { name: 'Change', exact: true }));
   await page.locator('#what textarea').fill('Half a volt all morning, and a browned half.');
-  await other.getByRole('button', { name: 'Change', exact: true }).click();
+  await press(other.getByRole('button', { name: 'Change', exact: true }));
   await other.getByLabel('Title').fill('Second position flat since dawn');
-  await other.getByRole('button', { name: 'Save' }).click();
+  await press(other.getByRole('button', { name: 'Save' }));
   await other.getByRole('heading', { level: 1, name: 'Second position flat since dawn' }).waitFor();
-  await page.getByRole('button', { name: 'Save' }).click();
+  await press(page.getByRole('button', { name: 'Save' }));
   const told = page.getByRole('alert').filter({ hasText: 'changed this case meanwhile' });
   await told.getByText('Second position flat since dawn').waitFor();
   expect(await page.locator('#what textarea').inputValue()).toBe(
     'Half a volt all morning, and a browned half.',
   );
-  await told.getByRole('button', { name: 'Send mine over it' }).click();
+  await press(told.getByRole('button', { name: 'Send mine over it' }));
   await told.waitFor({ state: 'detached' });
   // the form is gone, both changes stand
   await page.locator('#what p', { hasText: 'Half a volt all morning, and a browned half.' }).waitFor();
@@ -99,7 +100,7 @@ export async function moveOnBoard(page: Page, url: string, number: number): Prom
   await card(1).dragTo(page.locator('[data-column="2"]'));
   const dialog = page.getByRole('dialog', { name: `Close case ${number}: done` });
   await dialog.getByLabel('What was done').fill('Short leads mated anew.');
-  await dialog.getByRole('button', { name: 'Close the case' }).click();
+  await press(dialog.getByRole('button', { name: 'Close the case' }));
   await card(2).waitFor();
 }
 
@@ -107,6 +108,6 @@ export async function closeOnPage(page: Page, note: string): Promise<void> {
   await page.getByLabel('State').selectOption('done');
   const dialog = page.getByRole('dialog');
   await dialog.getByLabel('What was done').fill(note);
-  await dialog.getByRole('button', { name: 'Close the case' }).click();
+  await press(dialog.getByRole('button', { name: 'Close the case' }));
   await page.locator('#history li', { hasText: note }).waitFor();
 }

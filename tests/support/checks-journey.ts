@@ -1,6 +1,7 @@
 import sharp from 'sharp';
 import type { Locator, Page } from 'playwright-core';
 import { hydrated } from './browser';
+import { press } from './keyboard';
 
 /** The install checks of a string at the desk, by two people who meet at one of them. */
 
@@ -43,14 +44,14 @@ export async function meetAtOneCheck(
       .click();
     await item(who, 'strain_relief').getByLabel('Note').fill(note);
   }
-  await item(other, 'strain_relief').getByRole('button', { name: 'Save the check' }).click();
+  await press(item(other, 'strain_relief').getByRole('button', { name: 'Save the check' }));
   await recorded(item(other, 'strain_relief'), 'seen from the ladder');
-  await item(page, 'strain_relief').getByRole('button', { name: 'Save the check' }).click();
+  await press(item(page, 'strain_relief').getByRole('button', { name: 'Save the check' }));
   const notice = item(page, 'strain_relief').getByRole('status').filter({ hasText: 'meanwhile' });
   await notice.waitFor();
   const told = await notice.innerText();
   await journey.look(page, 'two people at one check');
-  await item(page, 'strain_relief').getByRole('button', { name: 'Save mine in place of theirs' }).click();
+  await press(item(page, 'strain_relief').getByRole('button', { name: 'Save mine in place of theirs' }));
   await recorded(item(page, 'strain_relief'), 'one clip added');
   return { told };
 }
@@ -63,20 +64,20 @@ export async function recordAndShow(
 ): Promise<{ refused: string }> {
   await openChecks(page, journey, string);
   const earth = item(page, 'earth_continuity');
-  await earth.getByRole('button', { name: /^Record/ }).click();
+  await press(earth.getByRole('button', { name: /^Record/ }));
   await earth.getByLabel('Resistance').fill('');
-  await earth.getByRole('button', { name: 'Save the check' }).click();
+  await press(earth.getByRole('button', { name: 'Save the check' }));
   await earth.getByRole('alert').filter({ hasText: 'Resistance' }).waitFor();
   await earth.getByLabel('Resistance').fill('0,42');
-  await earth.getByRole('button', { name: 'Save the check' }).click();
+  await press(earth.getByRole('button', { name: 'Save the check' }));
   await earth.getByText('Resistance 0.42').waitFor();
 
   const polarity = item(page, 'polarity');
-  await polarity.getByRole('button', { name: /^Record/ }).click();
+  await press(polarity.getByRole('button', { name: /^Record/ }));
   await polarity.getByLabel('+ to −').fill('-520');
   await polarity.getByText('Do not connect it').waitFor();
   await journey.look(page, 'a contradicted pass');
-  await polarity.getByRole('button', { name: 'Cancel' }).click();
+  await press(polarity.getByRole('button', { name: 'Cancel' }));
 
   const photo = await sharp({ create: { width: 1200, height: 800, channels: 3, background: '#a63' } })
     .jpeg()
@@ -88,7 +89,7 @@ export async function recordAndShow(
   ]);
   await earth.locator('img').nth(1).waitFor();
   const refused = await earth.getByRole('alert').innerText();
-  await earth.getByRole('button', { name: 'Leave it out' }).click();
+  await press(earth.getByRole('button', { name: 'Leave it out' }));
   await earth.locator('img').first().click();
   await page.locator('dialog[open] img').waitFor();
   await journey.look(page, 'a photo large');
@@ -101,14 +102,14 @@ export async function recordEvidenceAndSign(page: Page, journey: Journey, string
   await openChecks(page, journey, string);
   const pair = item(page, 'connectors');
   await page.getByText('a fire risk').first().waitFor();
-  await pair.getByRole('button', { name: 'Record the document that allows this pair' }).click();
+  await press(pair.getByRole('button', { name: 'Record the document that allows this pair' }));
   await pair.getByLabel('Document', { exact: true }).fill('Joint declaration 12');
   await pair.getByLabel('Edition or date').fill('2026-02');
   await pair.getByLabel('Page or table').fill('page 3');
   await journey.look(page, 'evidence for a pair');
-  await pair.getByRole('button', { name: 'Record the evidence' }).click();
+  await press(pair.getByRole('button', { name: 'Record the evidence' }));
   await pair.getByText('documented as intermatable. Joint declaration 12').waitFor();
-  await page.getByRole('button', { name: `Sign ${string} off` }).click();
+  await press(page.getByRole('button', { name: `Sign ${string} off` }));
   await page.locator('#string').getByText('Signed by').waitFor();
 }
 
@@ -118,7 +119,7 @@ export async function readReadings(page: Page, { url, site, look }: Journey): Pr
   await hydrated(page);
   await page.getByText(/^Not as expected/).click();
   await page.waitForURL('**/readings?show=odd');
-  await page.getByRole('button', { name: /^D3/ }).click();
+  await press(page.getByRole('button', { name: /^D3/ }));
   await page.locator('#reading').waitFor();
   await look(page, 'a reading that is not as expected');
   return { open: await page.locator('#reading').innerText() };

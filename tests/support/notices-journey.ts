@@ -2,6 +2,7 @@ import type { BrowserContext, Page } from 'playwright-core';
 import { expect } from 'vitest';
 import { faultsShown } from './axe';
 import { hydrated } from './browser';
+import { press } from './keyboard';
 
 export interface NoticesScene {
   /** Something of no hurry happens and is told. */
@@ -39,7 +40,7 @@ export async function noticesJourney(
   await scene.hazard('Unit 3 of A1 does not shut down');
   const card = page.getByRole('complementary', { name: 'Not shutting down' });
   await card.getByText('Unit 3 of A1 does not shut down').waitFor();
-  await card.getByRole('button', { name: 'Not now' }).click();
+  await press(card.getByRole('button', { name: 'Not now' }));
   await page
     .getByRole('heading', { name: '1 unread notice says that a string is not shutting down' })
     .waitFor();
@@ -49,20 +50,20 @@ export async function noticesJourney(
   await page.keyboard.press('ArrowDown');
   await page.keyboard.press('m');
   await unread(page, 1);
-  await page.getByRole('button', { name: 'Mark all as read' }).click();
+  await press(page.getByRole('button', { name: 'Mark all as read' }));
   await page.getByRole('heading', { name: 'You have read every notice' }).waitFor();
   faults.push(...(await faultsShown(page, 'notices', width)));
 
-  await page.getByRole('link', { name: 'Choose what you are told of' }).click();
+  await press(page.getByRole('link', { name: 'Choose what you are told of' }));
   await page.waitForURL('**/account/notices');
   await hydrated(page);
   await page.getByLabel('How you are told: Causes').selectOption('at_once');
-  await page.getByLabel('Quiet hours: no letters, but hazards').check();
+  await press(page.getByLabel('Quiet hours: no letters, but hazards'));
   await page.getByLabel('From').fill('06:00');
-  await page.getByRole('button', { name: 'Save what you are told of' }).click();
+  await press(page.getByRole('button', { name: 'Save what you are told of' }));
   await page.getByText('Quiet hours that end when they begin').first().waitFor();
   await page.getByLabel('Quiet hours: no letters, but hazards').uncheck();
-  await page.getByRole('button', { name: 'Save what you are told of' }).click();
+  await press(page.getByRole('button', { name: 'Save what you are told of' }));
   await page.getByText('is kept as you chose it').waitFor();
   faults.push(...(await faultsShown(page, 'what one is told of', width)));
 
@@ -71,7 +72,7 @@ export async function noticesJourney(
   const way = await scene.wayOut();
   const shown = await anybody.goto(url + way);
   expect(shown?.headers()).toMatchObject({ 'referrer-policy': 'no-referrer', 'x-robots-tag': 'noindex' });
-  await anybody.getByRole('button', { name: 'End these letters' }).click();
+  await press(anybody.getByRole('button', { name: 'End these letters' }));
   await anybody.getByRole('heading', { name: 'No more of these letters' }).waitFor();
   faults.push(...(await faultsShown(anybody, 'the way out of letters', width)));
   const how = async () => {
@@ -80,7 +81,7 @@ export async function noticesJourney(
     return page.getByLabel('How you are told: Causes').inputValue();
   };
   expect(await how()).toBe('in_product');
-  await anybody.getByRole('button', { name: 'Send them as before' }).click();
+  await press(anybody.getByRole('button', { name: 'Send them as before' }));
   await anybody.getByRole('heading', { name: 'Letters come as before' }).waitFor();
   expect(await how()).toBe('at_once');
   // as a mail program does it (RFC 8058)

@@ -2,6 +2,7 @@ import type { Page } from 'playwright-core';
 import { expect } from 'vitest';
 import { faultsShown } from './axe';
 import { hydrated } from './browser';
+import { press } from './keyboard';
 
 /**
  * A manager shares a site for a lobby, somebody who is not signed in looks at it, the manager ends it.
@@ -17,15 +18,15 @@ export async function shareJourney(
   const faults: string[] = [];
   await manager.goto(`${url}/my-site/${site.ref}`);
   await hydrated(manager);
-  await manager.getByRole('button', { name: 'Share this page' }).click();
+  await press(manager.getByRole('button', { name: 'Share this page' }));
   const dialog = manager.getByRole('dialog');
-  await dialog.getByRole('button', { name: 'Make the link' }).click();
+  await press(dialog.getByRole('button', { name: 'Make the link' }));
   await dialog.getByText('A label is missing.').waitFor();
   await dialog.getByLabel('Label').fill(label);
-  await dialog.getByLabel(/A lobby screen/).check();
-  await dialog.getByRole('button', { name: 'Make the link' }).click();
+  await press(dialog.getByLabel(/A lobby screen/));
+  await press(dialog.getByRole('button', { name: 'Make the link' }));
   const { pathname } = new URL(await dialog.getByLabel(`Link of “${label}”`).inputValue());
-  await dialog.getByRole('button', { name: 'Done' }).click();
+  await press(dialog.getByRole('button', { name: 'Done' }));
 
   const shown = await anybody.goto(url + pathname);
   expect(shown?.status()).toBe(200);
@@ -38,8 +39,8 @@ export async function shareJourney(
   const width = anybody.viewportSize()?.width ?? 0;
   faults.push(...(await faultsShown(anybody, 'the lobby screen', width)));
 
-  await manager.getByRole('button', { name: `End it: ${label}` }).click();
-  await dialog.getByRole('button', { name: 'End it' }).click();
+  await press(manager.getByRole('button', { name: `End it: ${label}` }));
+  await press(dialog.getByRole('button', { name: 'End it' }));
   await manager.getByRole('button', { name: `End it: ${label}` }).waitFor({ state: 'detached' });
   await manager.getByText(/Ended and run out/).click();
   await manager.getByText(label).first().waitFor();

@@ -3,6 +3,7 @@ import { paths } from '../../src/schemas/paths';
 import { axeFaults } from './axe';
 import { hydrated } from './browser';
 import { PASSWORD } from './fleet';
+import { press } from './keyboard';
 
 /**
  * A signed-in person makes a token, reads with it what its scope allows, finds an operation on the page of the API, and
@@ -17,22 +18,22 @@ export async function tokenJourney(
   const name = `Trial ${Date.now()}`;
   await page.goto(url + paths.account());
   await hydrated(page);
-  await page.getByRole('button', { name: 'Make a token' }).click();
+  await press(page.getByRole('button', { name: 'Make a token' }));
   const form = page.getByRole('dialog', { name: 'Make a token' });
-  await form.getByRole('button', { name: 'Make the token' }).click();
+  await press(form.getByRole('button', { name: 'Make the token' }));
   await form.getByText('Give it a name: what will use it?').waitFor();
   faults.push(...(await axeFaults(page)));
   await form.getByLabel('Name').fill(name);
-  await form.getByLabel('Units: where they are').check();
+  await press(form.getByLabel('Units: where they are'));
   await form.getByLabel('Your password').fill('not my password');
-  await form.getByRole('button', { name: 'Make the token' }).click();
+  await press(form.getByRole('button', { name: 'Make the token' }));
   await form.getByText('This is not your password.').waitFor();
   await form.getByLabel('Your password').fill(PASSWORD);
-  await form.getByRole('button', { name: 'Make the token' }).click();
+  await press(form.getByRole('button', { name: 'Make the token' }));
   const made = page.getByRole('dialog', { name: 'Your new token' });
   const token = (await made.getByLabel('The token').textContent()) ?? '';
   faults.push(...(await axeFaults(page)));
-  await made.getByRole('button', { name: 'I have kept it' }).click();
+  await press(made.getByRole('button', { name: 'I have kept it' }));
   await made.waitFor({ state: 'hidden' });
   if ((await page.content()).includes(token)) faults.push('the token is still on the page');
 
@@ -53,8 +54,8 @@ export async function tokenJourney(
   await hydrated(page);
   const line = page.getByRole('listitem').filter({ hasText: name });
   await line.getByText(/^Used .* from /).waitFor();
-  await line.getByRole('button', { name: `End the token ${name}` }).click();
-  await page.getByRole('dialog').getByRole('button', { name: 'End the token' }).click();
+  await press(line.getByRole('button', { name: `End the token ${name}` }));
+  await press(page.getByRole('dialog').getByRole('button', { name: 'End the token' }));
   await page.getByText(`The token ${name} has ended.`).waitFor();
   await line.waitFor({ state: 'detached' });
   statuses.ended = (await ask('/sites')).status;

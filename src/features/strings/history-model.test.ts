@@ -91,6 +91,7 @@ describe('chosen units as a chart', () => {
         side: 'output',
         range: 'day',
         resolution: 'minute',
+        imported: false,
         from: MIDNIGHT,
         to: MIDNIGHT + DAY,
         timeZone: 'UTC',
