@@ -1,4 +1,4 @@
-import { number, quantity } from './numbers';
+import { number } from './numbers';
 import { SCREEN, type Paint } from './paint';
 import { loopScatter } from '../words/drawings';
 

@@ -1,6 +1,6 @@
 import { CONDITION_WORDS, type Condition } from './condition';
 import { Hatch } from './Hatch';
-import { listed, quantity, volts } from './numbers';
+import { listed, quantity } from './numbers';
 import { SCREEN, type Paint } from './paint';
 import {
   staircaseGeometry,

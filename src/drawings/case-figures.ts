@@ -1,5 +1,5 @@
 import type { CaseFigures, FiguresString, LightNow } from '../domain/cases/figures';
-import { amperes, energy, listed, number, percent, power, quantity, volts } from './numbers';
+import { amperes, energy, listed, power, quantity, volts } from './numbers';
 import type { StaircaseInput } from './staircase-geometry';
 import { caseFigures } from '../words/drawings';
 

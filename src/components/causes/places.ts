@@ -1,4 +1,4 @@
-import { counted, listed } from '../../drawings/numbers';
+import { listed } from '../../drawings/numbers';
 import type { CauseNow } from '../../schemas/api/now';
 import { sharedCausesPlaces } from '../../words/shared-causes';
 

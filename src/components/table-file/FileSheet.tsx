@@ -3,7 +3,6 @@ import { Button } from '../ui/Button';
 import { Choice } from '../ui/Choice';
 import { Notice } from '../ui/Notice';
 import { Sheet } from '../ui/Sheet';
-import { number } from '../../drawings/numbers';
 import { ENCODING_NAMES, type Encoding } from './decode';
 import { SEPARATOR_NAMES, SEPARATORS, type Separator } from './separators';
 import { fileSheet } from '../../words/table-file';

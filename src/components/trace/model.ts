@@ -1,4 +1,4 @@
-import { listed, number } from '../../drawings/numbers';
+import { listed } from '../../drawings/numbers';
 import type { SiteTraces, StringTrace } from '../../schemas/api/trace';
 import { traceModel } from '../../words/trace';
 

@@ -1,4 +1,3 @@
-import { number } from '../../drawings/numbers';
 import { Button } from './Button';
 import { showMore } from '../../words/ui';
 

@@ -1,5 +1,4 @@
 import { reports, type PartKind } from '../../domain/commissioning/as-built/parts';
-import { number } from '../../drawings/numbers';
 import type { AsBuilt, AsBuiltView, StringBuilt } from '../../schemas/api/as-built';
 import { nameOf } from '../../schemas/as-built-values';
 import { asBuiltFindingWords } from '../../words/as-built';

@@ -1,5 +1,4 @@
 import { currentStep, openGaps } from '../../domain/commissioning/steps';
-import { number } from '../../drawings/numbers';
 import type { SiteSteps, UnderWayView } from '../../schemas/api/commissioning';
 import { underWay } from '../../words/commissioning';
 

@@ -1,4 +1,4 @@
-import { listed, number } from '../../drawings/numbers';
+import { listed } from '../../drawings/numbers';
 import type { RollCallRun } from '../../schemas/api/roll-call';
 import type { CommandNow } from '../../schemas/api/now';
 import type { RollTally, UnknownUnit } from './tally';

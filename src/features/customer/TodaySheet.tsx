@@ -1,6 +1,5 @@
 import { Sheet } from '../../components/ui/Sheet';
 import { DayCurve } from '../../drawings/DayCurve';
-import { energy } from '../../drawings/numbers';
 import { clock } from '../../drawings/times';
 import type { CustomerSite } from '../../schemas/api/customer';
 import { clearDayWords } from './cards';

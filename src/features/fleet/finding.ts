@@ -1,6 +1,6 @@
 import { countInside, headingOf, WHAT_TO_DO } from '../../components/causes/finding';
 import { GRAVITY } from '../../components/causes/words';
-import { listed, number } from '../../drawings/numbers';
+import { listed } from '../../drawings/numbers';
 import type { CauseNow, SiteNow } from '../../schemas/api/now';
 import { fleetFindingWords } from '../../words/fleet';
 

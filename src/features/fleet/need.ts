@@ -1,5 +1,4 @@
 import { concerned } from '../../components/causes/places';
-import { number } from '../../drawings/numbers';
 import { siteClock } from '../../components/ui/reader-zone';
 import type { CauseNow, SiteNow } from '../../schemas/api/now';
 import { fleetNeed } from '../../words/fleet';

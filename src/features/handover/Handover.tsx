@@ -8,7 +8,7 @@ import { Notice } from '../../components/ui/Notice';
 import { Sheet } from '../../components/ui/Sheet';
 import { SiteTime } from '../../components/ui/Time';
 import { openGaps } from '../../domain/commissioning/steps';
-import { listed, number } from '../../drawings/numbers';
+import { listed } from '../../drawings/numbers';
 import { api, ApiError } from '../../lib/api';
 import { queryClient } from '../../lib/query-client';
 import { paths } from '../../schemas/paths';

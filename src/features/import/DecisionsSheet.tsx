@@ -10,7 +10,6 @@ import {
   type NameColumn,
   type NewStringDefaults,
 } from '../../domain/commissioning/import/table';
-import { number } from '../../drawings/numbers';
 import { paths } from '../../schemas/paths';
 import type { CheckedFile } from './desk';
 import { decisionsSheet } from '../../words/import';

@@ -7,7 +7,7 @@ import { Notice } from '../../components/ui/Notice';
 import { SearchInput } from '../../components/ui/SearchInput';
 import { Sheet } from '../../components/ui/Sheet';
 import { Table, type Column } from '../../components/ui/Table';
-import { energy, money, number, percent, UNKNOWN } from '../../drawings/numbers';
+import { energy, money, percent, UNKNOWN } from '../../drawings/numbers';
 import { shortDate } from '../../drawings/times';
 import { withQuery } from '../../lib/api';
 import { queryClient } from '../../lib/query-client';

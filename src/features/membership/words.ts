@@ -1,5 +1,5 @@
 import { groupsOf, unitName } from '../../components/placements/suspects';
-import { listed, number } from '../../drawings/numbers';
+import { listed } from '../../drawings/numbers';
 import type { IsolationPage, IsolationRun } from '../../schemas/api/isolation';
 import type { MembershipPage } from '../../schemas/api/membership';
 import { membershipWordsWords } from '../../words/membership';

@@ -12,7 +12,7 @@ import {
 } from '../../domain/verdicts/context';
 import { judgeFrame, sweepString } from '../../domain/verdicts/judge';
 import { newMemory } from '../../domain/verdicts/memory';
-import { number, percent, quantity } from '../../drawings/numbers';
+import { percent, quantity } from '../../drawings/numbers';
 import type { Example } from './example';
 import { examplesConduct } from '../../words/method-examples';
 

@@ -5,7 +5,7 @@ import { yields } from '../../domain/output/yields';
 import { vocOf } from '../../domain/photovoltaics/module/datasheet';
 import { interpretReading } from '../../domain/readings/interpret';
 import { ORDINARY_METER } from '../../domain/readings/reading';
-import { number, percent, quantity } from '../../drawings/numbers';
+import { percent, quantity } from '../../drawings/numbers';
 import type { Example } from './example';
 import { examplesElectrical } from '../../words/method-examples';
 

@@ -3,7 +3,6 @@ import { Button } from '../../components/ui/Button';
 import { Field } from '../../components/ui/Field';
 import { Sheet } from '../../components/ui/Sheet';
 import { outlineArea, outlineFault, type Outline } from '../../domain/commissioning/roof/outline';
-import { number } from '../../drawings/numbers';
 import { typedNumber } from '../../schemas/typed-number';
 import { rectangle } from './draft';
 import { outlinePanel } from '../../words/roof';

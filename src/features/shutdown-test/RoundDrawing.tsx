@@ -1,6 +1,5 @@
 import type { RoundEvidence, TestFacts, TestRound } from '../../domain/commissioning/shutdown-test-record';
 import type { TestVerdict } from '../../domain/commissioning/shutdown-test-verdict';
-import { volts } from '../../drawings/numbers';
 import { TestLines } from '../../drawings/TestLines';
 import { linesOf, readingPoints, releasedAfterS, roundName, type StringNow } from './round';
 import { roundDrawing } from '../../words/shutdown-test';

@@ -6,7 +6,7 @@ import { Notice } from '../../components/ui/Notice';
 import { Sheet } from '../../components/ui/Sheet';
 import { useNow } from '../../components/ui/Time';
 import type { TestReading } from '../../domain/commissioning/shutdown-test-record';
-import { clock, clockSeconds } from '../../drawings/times';
+import { clockSeconds } from '../../drawings/times';
 import { ReadingEntry } from './ReadingEntry';
 import { RoundDrawing } from './RoundDrawing';
 import { StringRows } from './StringRows';

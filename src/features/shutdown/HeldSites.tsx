@@ -1,6 +1,5 @@
 import { Table, type Column } from '../../components/ui/Table';
 import { MixBar } from '../../drawings/MixBar';
-import { number } from '../../drawings/numbers';
 import { siteClock, useReaderZone } from '../../components/ui/reader-zone';
 import { fullTime } from '../../drawings/times';
 import type { CommandNow } from '../../schemas/api/now';

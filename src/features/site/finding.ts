@@ -1,6 +1,5 @@
 import { countInside, subject, total, WHAT_TO_DO } from '../../components/causes/finding';
 import { GRAVITY } from '../../components/causes/words';
-import { number, power } from '../../drawings/numbers';
 import { clockOrDate } from '../../drawings/times';
 import type { CauseNow, SiteNow } from '../../schemas/api/now';
 import { siteFindingWords } from '../../words/site';
