@@ -33,7 +33,15 @@ export async function press(target: Locator, key?: 'Enter' | ' '): Promise<void>
     return before ? 'the one before' : 'the beginning';
   });
   if (from !== 'itself') {
-    await page.keyboard.press('Tab');
+    // a date or a time is gone through part by part before Tab leads on
+    for (let parts = 0; parts < 6; parts++) {
+      await page.keyboard.press('Tab');
+      const still = await page.evaluate(() => {
+        const e = document.activeElement;
+        return e instanceof HTMLInputElement && /^(date|time|month|week|datetime-local)$/.test(e.type);
+      });
+      if (!still) break;
+    }
     const radio = await target.evaluate((e) => e instanceof HTMLInputElement && e.type === 'radio');
     // arrows choose within a group; where the group is, Tab has led to
     if (radio) await target.focus();
