@@ -1,4 +1,4 @@
-import type { Browser, BrowserContext, Page } from 'playwright-core';
+import type { Browser, Page } from 'playwright-core';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import type { Role } from '../../src/domain/access/permissions';
 import { newToken, tokenHash } from '../../src/server/auth/secret-link';
@@ -69,19 +69,25 @@ interface Look {
   scheme: 'light' | 'dark';
 }
 /** Each width and each scheme once: colours don't change with the width, nor widths with the colours. */
-const LOOKS: readonly Look[] = [
+const LOOKS: readonly [Look, Look] = [
   { width: 1440, scheme: 'light' },
   { width: 390, scheme: 'dark' },
 ];
-/** One window for each who looks. */
-const windows = new Map<Role | null, Promise<BrowserContext>>();
-async function pageFor(role: Role | null): Promise<Page> {
+/** One page for each who looks: a new one would be a new process, which reads axe and the site's scripts anew. */
+const windows = new Map<Role | null, Promise<Page>>();
+function pageFor(role: Role | null): Promise<Page> {
   const options = { reducedMotion: 'reduce' } as const;
   const window =
     windows.get(role) ??
-    (role ? signedInContext(browser, site.url, role, options) : browser.newContext(options));
+    (role ? signedInContext(browser, site.url, role, options) : browser.newContext(options)).then((context) =>
+      context.newPage(),
+    );
   windows.set(role, window);
-  return (await window).newPage();
+  return window;
+}
+async function lookAs(page: Page, { width, scheme }: Look): Promise<void> {
+  await page.setViewportSize({ width, height: 900 });
+  await page.emulateMedia({ colorScheme: scheme });
 }
 
 const refOf = (name: string) => fleet.site(name).ref;
@@ -343,6 +349,7 @@ async function faultsOf(page: Page, shown: Shown): Promise<string[]> {
       faults.push(`console: ${m.text()}`);
   });
   page.on('pageerror', (e) => faults.push(`script: ${e.message}`));
+  await lookAs(page, LOOKS[0]);
   const response = await page.goto(site.url + shown.path(), { waitUntil: 'load' });
   if (response?.status() !== (shown.status ?? 200)) faults.push(`status ${response?.status()}`);
   await hydrated(page); // without a word in the console
@@ -350,8 +357,7 @@ async function faultsOf(page: Page, shown: Shown): Promise<string[]> {
   const headings = await page.locator('h1').count();
   if (headings !== 1) faults.push(`${headings} headings of the first level`);
   for (const look of LOOKS) {
-    await page.setViewportSize({ width: look.width, height: 900 });
-    await page.emulateMedia({ colorScheme: look.scheme });
+    await lookAs(page, look);
     await settled(page);
     const wider = await page.evaluate(
       () => document.documentElement.scrollWidth - document.documentElement.clientWidth,
@@ -368,7 +374,7 @@ describe('on a desk in light and a phone in the dark', () => {
     try {
       expect(await faultsOf(page, shown)).toEqual([]);
     } finally {
-      await page.close();
+      page.removeAllListeners(); // what is said after this is another test's
     }
   });
 });
