@@ -22,6 +22,8 @@ import { INTERVAL_S, rightFor, truthFleet } from '../support/truth';
 const SECRET = 'truth will out';
 /** Seconds of the plant's time that a judgement may take: the time limit and three reports. */
 const JUDGED_AFTER_S = 30 + 5 * INTERVAL_S;
+/** How long changes without a command are remembered (domain/verdicts/context.ts). */
+const FLAP_WINDOW_S = 3600;
 let db: TestDatabase;
 let sockets: Sockets;
 let plan: FleetPlan;
@@ -282,7 +284,13 @@ describe(
       for (const name of open) simulator.setInitiator(site, name, false);
       for (const id of ids) simulator.clear(site, id);
       await pass(JUDGED_AFTER_S);
-      expect(await settledDisagreements(site, () => false)).toEqual([]);
+      let left = await settledDisagreements(site, () => false);
+      // units that changed often, by this case and the ones before it, are said to flap as long as the window reaches
+      if (left.length > 0 && left.every((one) => one.endsWith('said passing/flapping, right passing/ok'))) {
+        await pass(FLAP_WINDOW_S);
+        left = await settledDisagreements(site, () => false);
+      }
+      expect(left).toEqual([]);
     });
 
     it('snow: units without light are dark or silent, never stuck, and unconfirmed when shutdown is commanded', async () => {
