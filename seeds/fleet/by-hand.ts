@@ -11,7 +11,11 @@ if (!Number.isInteger(units / 100) || units < 100 || units > 1_000_000)
   throw new Error('Say how many units: a multiple of 100, at most 1,000,000.');
 const secret = process.env.WAKELINE_DEMO_SECRET;
 if (!secret) throw new Error('WAKELINE_DEMO_SECRET is not set: the same text as the load has.');
-const knex = knexFactory({ client: 'pg', connection: process.env.DATABASE_URL ?? '', pool: { min: 0, max: 2 } });
+const knex = knexFactory({
+  client: 'pg',
+  connection: process.env.DATABASE_URL ?? '',
+  pool: { min: 0, max: 2 },
+});
 try {
   const passwordHash = await hash('roof-ladder-meter', {
     memoryCost: 19_456,

@@ -60,7 +60,7 @@ export function routeUpgrade(req: IncomingMessage, socket: Duplex, head: Buffer)
   const drop = (): void => void socket.destroy();
   socket.on('error', drop);
   const requestId = requestIdOf(req.headers['x-request-id'], config().TRUST_PROXY);
-  inRequest({ requestId }, () =>
+  void inRequest({ requestId }, () =>
     Promise.resolve(handle(req, socket, head)).catch((error: unknown) => {
       log.error({ error, path }, 'an upgrade failed');
       if (socket.writable) refuseUpgrade(socket, '503 Service Unavailable');
