@@ -33,7 +33,7 @@ export const checkScreen = {
   onceCurrentFlows: 'Once current flows',
   notApplicable: 'not applicable',
   theTypesOfThis: 'The types of this string are not on this phone yet.',
-  allChecksOfAre: (which: string) => `All checks of ${which} are recorded`,
+  everyCheckOf: (which: string) => `All checks of ${which} are recorded`,
   somethingBlocksTheSign: (which: string) => `Something blocks the sign-off of ${which}`,
   ofChecksOpenAt: (open: number, checks: number, which: string) =>
     `${countAtStart(open)} of ${checks} checks ${open === 1 ? 'is' : 'are'} open at ${which}`,

@@ -20,7 +20,7 @@ export const causeCard = {
   where: 'Where',
   whatItCosts: 'What it costs',
   about: 'About',
-  soFar: 'So far',
+  untilNow: 'So far',
   itIsNoMatter: 'It is no matter of energy.',
   notKnown: 'Not known.',
   noMoneyIsShown: (currency: null | string) =>
@@ -38,7 +38,7 @@ export const causesList = {
   oldestFirst: 'oldest first',
   costliestFirst: 'costliest first',
   aDay: ' a day',
-  soFar: ' so far',
+  untilNow: ' so far',
   over2: 'Over',
   cameBackReopened1: (reopened: number) => `came back ${reopened === 1 ? 'once' : `${reopened} times`}`,
   since: 'since ',

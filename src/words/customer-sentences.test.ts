@@ -40,7 +40,10 @@ const roof = (more: Partial<CustomerNow> = {}): CustomerNow => ({
   inverters: { total: 3, gridLost: 0, fault: 0, limited: 0, ...more.inverters },
 });
 const plain = (text: string): string => text.replace(/\u00a0/g, ' ');
-const said = (now: CustomerNow, today = { energy: 118_000 as number | null, clearEnergySoFar: 128_000 }) => {
+const said = (
+  now: CustomerNow,
+  today = { energy: 118_000 as number | null, clearEnergyUntilNow: 128_000 },
+) => {
   const words = customerWords(now, today, 'UTC', CARE);
   return {
     ...words,
@@ -120,8 +123,8 @@ describe('a roof at work', () => {
     expect(said(roof({ loggers: 2, quietLoggers: 1 })).all).toContain('Part of your roof has not reported');
   });
   it('does not compare where there is nothing to compare with', () => {
-    expect(said(roof(), { energy: null, clearEnergySoFar: 0 }).all).toBe('Nothing needs your attention.');
-    expect(said(roof(), { energy: 40, clearEnergySoFar: 90 }).all).toContain('Today so far 40 Wh.');
+    expect(said(roof(), { energy: null, clearEnergyUntilNow: 0 }).all).toBe('Nothing needs your attention.');
+    expect(said(roof(), { energy: 40, clearEnergyUntilNow: 90 }).all).toContain('Today so far 40 Wh.');
   });
 });
 

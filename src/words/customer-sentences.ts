@@ -17,7 +17,7 @@ export interface CustomerWords {
 }
 /** Whom the sentences speak to: the owner of the roof, or whoever passes a shared page. */
 export type Reader = 'owner' | 'anybody';
-type Today = Pick<CustomerSite['today'], 'energy' | 'clearEnergySoFar'>;
+type Today = Pick<CustomerSite['today'], 'energy' | 'clearEnergyUntilNow'>;
 
 /** Below this share of a clear day's energy so far there is no fair comparison yet, Wh. */
 const COMPARE_FROM_WH = 500;
@@ -148,8 +148,8 @@ function todayWords(now: SharedNow, today: Today): string {
   const made = now.daylight
     ? `Today so far ${energy(today.energy)}`
     : `Today it made ${energy(today.energy)}`;
-  if (today.clearEnergySoFar < COMPARE_FROM_WH) return `${made}.`;
-  return `${made}, ${percent(today.energy / today.clearEnergySoFar)} of what a clear day ${now.daylight ? 'would have given by now' : 'gives'}.`;
+  if (today.clearEnergyUntilNow < COMPARE_FROM_WH) return `${made}.`;
+  return `${made}, ${percent(today.energy / today.clearEnergyUntilNow)} of what a clear day ${now.daylight ? 'would have given by now' : 'gives'}.`;
 }
 
 /** Whether anything but a quiet working or resting roof is there to tell. */

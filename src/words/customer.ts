@@ -58,8 +58,8 @@ export const roofPage = {
 
 export const todaySheet = {
   nothingIsKnownOf: 'Nothing is known of today yet; the dotted line is a clear day of this date.',
-  powerMadeTodayN: (n: number, clearEnergySoFar: number) =>
-    `Power made today, ${energy(n)} so far, beside a clear day of this date${clearEnergySoFar > 0 ? `: ${percent(n / clearEnergySoFar)} of it by now` : ''}.`,
+  powerMadeTodayN: (n: number, clearEnergyUntilNow: number) =>
+    `Power made today, ${energy(n)} so far, beside a clear day of this date${clearEnergyUntilNow > 0 ? `: ${percent(n / clearEnergyUntilNow)} of it by now` : ''}.`,
   today: 'Today',
   solidMade: (clearFrom: string) => `solid: made · ${clearFrom}`,
   nothingIsKnownOfToday: 'Nothing is known of today yet.',

@@ -42,7 +42,7 @@ export const loggerSheet = {
   endNow: 'End now',
   endNowNameThe: (name: string) => `End now: ${name ? `the token ${name}` : 'this token'}`,
   nothingOfItWas: 'Nothing of it was refused',
-  refusedSoFar: (refused: number) => `${counted(refused, 'message')} refused so far`,
+  refusedUntilNow: (refused: number) => `${counted(refused, 'message')} refused so far`,
   whatWasRefusedOf: (serial: string) => `What was refused of logger ${serial}`,
   whatWasWrongThe: 'What was wrong, the newest of its kind',
   times: 'Times',

@@ -172,7 +172,7 @@ export const membershipWordsWords = {
   theInputLostPart: (which: string) => `The input lost ${which}’s part`,
   itsUnitsReportNothing: 'Its units report nothing:',
   theInputShowsThat: 'the input shows that a string of it was isolated, and never which units are in it.',
-  allUnitsOfAre: (gone: number, which: string) => `All ${number(gone)} units of ${which} are in it`,
+  everyUnitOf: (gone: number, which: string) => `All ${number(gone)} units of ${which} are in it`,
   inToldNothing: (gone: number, which: string, untold: number) =>
     `${counted(gone, 'unit')} ${gone === 1 ? 'is' : 'are'} in ${which}, ${number(untold)} told nothing`,
   noUnitOfAnother: 'No unit of another string went to zero with it.',

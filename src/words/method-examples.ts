@@ -2,7 +2,7 @@ import { number, percent, quantity } from '../drawings/numbers';
 
 export const examplesCommissioning = {
   unitsOnTheRoster: 'Units on the roster',
-  heardSoFar: 'Heard so far',
+  heardUntilNow: 'Heard so far',
   sinceTheStart: 'Since the start',
   stringI: (i: number, max: number) => `string ${i % max}`,
   tooFewHaveAnswered: 'Too few have answered to say anything of the rest',

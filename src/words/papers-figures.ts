@@ -52,7 +52,7 @@ export const papersFiguresWords = {
     `The performance ratio is ${number(performanceRatio, 2)}.`,
   ofTheDataDue: (completeness: number) =>
     `${percent(completeness)} of the data due have come: what is missing is in none of the figures.`,
-  hasMadeSoFar: (site: string, made: string, period: string) =>
+  hasMadeUntilNow: (site: string, made: string, period: string) =>
     `${site} has made ${made} so far in ${period}`,
   madeIn: (site: string, made: string, period: string) => `${site} made ${made} in ${period}`,
   lightMeasuredInOf: (completenessLight: number) =>

@@ -78,9 +78,9 @@ export const serialsModel = {
   nothingIsTyped: 'Nothing is typed',
   typeTheSerialOr: 'Type the serial, or skip this position.',
   whichPosition: (which: string, position: number) => `${which}, position ${position}`,
-  allSerialsOfAre: (n: number, which: string) => `All ${n} serials of ${which} are read`,
+  everySerialOf: (n: number, which: string) => `All ${n} serials of ${which} are read`,
   theOneSerialOf: (which: string) => `The one serial of ${which} is still to be read`,
-  serialsOfAreStill: (n: number, which: string) => `${n} serials of ${which} are still to be read`,
+  serialsStillOf: (n: number, which: string) => `${n} serials of ${which} are still to be read`,
   ofReadToGo: (n: number, left: number, left2: undefined | string) =>
     `${n - left} of ${n} read, ${left2 ?? left} to go`,
 };

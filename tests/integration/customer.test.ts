@@ -75,7 +75,7 @@ describe('today', () => {
     const roof = await read(owner, CLINIC, new Date('2026-07-02T12:00:00Z'));
     const inside = roof.today.clear.filter((p) => p.at >= '2026-07-02T09:00' && p.at < '2026-07-02T10:00');
     expect(inside).toHaveLength(4);
-    expect(roof.today.clearEnergySoFar).toBeCloseTo(
+    expect(roof.today.clearEnergyUntilNow).toBeCloseTo(
       inside.reduce((sum, p) => sum + (p.power * QUARTER_MS) / HOUR, 0),
       6,
     );

@@ -36,7 +36,7 @@ export function CheckScreen(props: ScreenProps) {
   const heading =
     open === 0
       ? state.maySign
-        ? checkScreen.allChecksOfAre(string.name)
+        ? checkScreen.everyCheckOf(string.name)
         : checkScreen.somethingBlocksTheSign(string.name)
       : checkScreen.ofChecksOpenAt(open, checks.length, string.name);
   const saved = () => {

@@ -104,7 +104,7 @@ export function CauseCard({ cause }: { cause: CausePage }) {
               )}
               {upToNow && (
                 <div className="flex justify-between gap-4">
-                  <dt className="text-ink-2">{causeCard.soFar}</dt>
+                  <dt className="text-ink-2">{causeCard.untilNow}</dt>
                   <dd className="font-semibold tabular-nums">{upToNow}</dd>
                 </div>
               )}

@@ -33,7 +33,7 @@ export function KindTag({ kind }: Pick<CauseItem, 'kind'>) {
 function Line({ cause, page }: { cause: CauseItem; page: CausesPage }) {
   const time = { now: page.at, timeZone: cause.timeZone };
   const perDay = lossWords(cause.lossWhDay, cause.lossMoneyDay, page.currency, causesList.aDay);
-  const upToNow = lossWords(cause.lossWh, cause.lossMoney, page.currency, causesList.soFar);
+  const upToNow = lossWords(cause.lossWh, cause.lossMoney, page.currency, causesList.untilNow);
   return (
     <li className="grid gap-x-6 gap-y-1 py-3 lg:grid-cols-[minmax(0,1fr)_210px_190px]">
       <div className="min-w-0">

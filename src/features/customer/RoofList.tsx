@@ -5,7 +5,7 @@ import { Sheet } from '../../components/ui/Sheet';
 import { customerWords } from '../../words/customer-sentences';
 import { roofList } from '../../words/customer';
 
-const NO_DAY = { energy: null, clearEnergySoFar: 0 };
+const NO_DAY = { energy: null, clearEnergyUntilNow: 0 };
 
 /** Each roof with its heading; the page behind it says the rest. */
 export function RoofList({ sites, organisation }: { sites: CustomerSites; organisation: string }) {

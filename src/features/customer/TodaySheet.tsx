@@ -16,7 +16,7 @@ interface Props {
 export const dayLabel = (today: CustomerSite['today']): string =>
   today.energy === null
     ? todaySheet.nothingIsKnownOf
-    : todaySheet.powerMadeTodayN(today.energy, today.clearEnergySoFar);
+    : todaySheet.powerMadeTodayN(today.energy, today.clearEnergyUntilNow);
 
 /** The day so far as a curve beside a clear day of its date, and as a table. */
 export function TodaySheet({ today, at, timeZone }: Props) {

@@ -11,7 +11,7 @@ const today = (madeAt: number[]) => ({
   energy: 1,
   clear: Array.from({ length: 96 }, (_, i) => ({ at: quarter(i), power: i >= 32 && i < 64 ? 2000 : 0 })),
   clearFrom: 'own_best' as const,
-  clearEnergySoFar: 1,
+  clearEnergyUntilNow: 1,
 });
 
 describe('the day in hours', () => {

@@ -6,7 +6,7 @@ import { customerWords } from '../../words/customer-sentences';
 
 const AT = '2026-12-01T14:30:00.000Z';
 const CARE = { organisation: 'Lowfield Solar Works' };
-const TODAY = { energy: 118_000, clearEnergySoFar: 128_000 };
+const TODAY = { energy: 118_000, clearEnergyUntilNow: 128_000 };
 const count = fc.integer({ min: 0, max: 96 });
 const now: fc.Arbitrary<SharedNow> = fc.record({
   at: fc.constant(AT),

@@ -132,7 +132,7 @@ export function LoggerSheet({ logger, now, timeZone, mayManage, onNew, onEnd }: 
         ]}
       />
       <h3 className="mb-1 mt-6 text-[15px]">
-        {logger.refused === 0 ? loggerSheet.nothingOfItWas : loggerSheet.refusedSoFar(logger.refused)}
+        {logger.refused === 0 ? loggerSheet.nothingOfItWas : loggerSheet.refusedUntilNow(logger.refused)}
       </h3>
       {logger.refusals.length > 0 && (
         <Table

@@ -167,7 +167,7 @@ export function isolationWords(run: IsolationRun): Said {
         return {
           heading:
             untold === 0
-              ? membershipWordsWords.allUnitsOfAre(gone.length, string)
+              ? membershipWordsWords.everyUnitOf(gone.length, string)
               : membershipWordsWords.inToldNothing(gone.length, string, untold),
           strong: '',
           rest: membershipWordsWords.noUnitOfAnother,

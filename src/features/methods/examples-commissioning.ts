@@ -24,7 +24,7 @@ export const rollCallExample: Example = {
     {
       kind: 'number',
       key: 'heard',
-      label: examplesCommissioning.heardSoFar,
+      label: examplesCommissioning.heardUntilNow,
       min: 0,
       max: 600,
       whole: true,

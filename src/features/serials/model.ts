@@ -181,10 +181,8 @@ const ORDINALS = ['none', 'one', 'two', 'three'];
 export function progressWords(string: WalkString): string {
   const left = string.slots.filter((s) => s.serial === null).length;
   const of = string.slots.length;
-  if (left === 0) return serialsModel.allSerialsOfAre(of, string.name);
+  if (left === 0) return serialsModel.everySerialOf(of, string.name);
   if (left === of)
-    return of === 1
-      ? serialsModel.theOneSerialOf(string.name)
-      : serialsModel.serialsOfAreStill(of, string.name);
+    return of === 1 ? serialsModel.theOneSerialOf(string.name) : serialsModel.serialsStillOf(of, string.name);
   return serialsModel.ofReadToGo(of, left, ORDINALS[left]);
 }

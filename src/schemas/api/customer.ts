@@ -67,7 +67,7 @@ export const customerSite = z.object({
     energy: z.number().nullable(), // Wh so far; null: nothing is known of today
     clear: z.array(dayPoint), // a clear day of this date
     clearFrom: z.enum(['own_best', 'datasheet']), // what the model was scaled to
-    clearEnergySoFar: z.number(), // Wh, over the same quarters as `made`
+    clearEnergyUntilNow: z.number(), // Wh, over the same quarters as `made`
   }),
   month: z.object({
     first: day,

@@ -1,4 +1,5 @@
 import type pg from 'pg';
+import { VALUE_COLUMNS as COLUMNS, type ValueColumn as Column } from './frames';
 import type { FrameRow } from './ingest-rows';
 
 /**
@@ -9,17 +10,6 @@ import type { FrameRow } from './ingest-rows';
  * of a string is taken from the batch by its time alone. `server/ingest/batch.ts` sees to both.
  */
 const FULL = (of: string) => `~((-1)::int8 << cardinality(${of}.state))`;
-const COLUMNS = [
-  'voltage',
-  'voltage_in',
-  'current',
-  'power',
-  'temperature',
-  'signal',
-  'via',
-  'state',
-] as const;
-type Column = (typeof COLUMNS)[number];
 /** Not every type has these: where one side is NULL the other stands. */
 const OPTIONAL = new Set<Column>(['voltage_in', 'power']);
 const either = (column: Column, a: string, b: string, both: string) =>

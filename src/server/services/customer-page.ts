@@ -92,7 +92,7 @@ function todayOf(
     energy: made.length > 0 ? energyOf(made) : null,
     clear: points(clear),
     clearFrom: best === null ? 'datasheet' : 'own_best',
-    clearEnergySoFar: energyOf(clear.filter((p) => counted.has(p.atMs))),
+    clearEnergyUntilNow: energyOf(clear.filter((p) => counted.has(p.atMs))),
   };
 }
 

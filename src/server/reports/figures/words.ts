@@ -72,7 +72,7 @@ export function siteFinding(f: SiteFigures): { finding: string; sentence: string
   ];
   return {
     finding: elapsed.running
-      ? papersFiguresWords.hasMadeSoFar(site.name, made, period.label)
+      ? papersFiguresWords.hasMadeUntilNow(site.name, made, period.label)
       : papersFiguresWords.madeIn(site.name, made, period.label),
     sentence: parts.filter(Boolean).join(' '),
   };
