@@ -116,12 +116,23 @@ async function setPassword(home, bin, state) {
   if (result.code !== 0) throw new Error(`the password of ${dataOf(home)} could not be set\n${result.out}`);
 }
 
+const ENDS_WITHIN_MS = 10_000;
+
 async function stopServer(home) {
   const bin = postgresPrograms(majorOf(dataOf(home)));
-  if (bin)
-    await postgres(bin, 'pg_ctl', ['stop', '-D', dataOf(home), '-m', 'fast', '-w', '-t', '60', '-s'], {
-      evenAtEnd: true,
-    });
+  const server = postmasterOf(home);
+  if (!bin) return;
+  const { code } = await postgres(
+    bin,
+    'pg_ctl',
+    ['stop', '-D', dataOf(home), '-m', 'fast', '-w', '-t', '60', '-s'],
+    { evenAtEnd: true },
+  );
+  if (code !== 0 || !server?.ours) return;
+  // pg_ctl goes by the file that the server removes, a moment before it ends
+  const born = bornAt(server.pid);
+  const until = Date.now() + ENDS_WITHIN_MS;
+  while (born && isAlive(server.pid, born) && Date.now() < until) await sleep(5);
 }
 
 const SAFE = ['-c max_wal_size=2GB', '-c shared_buffers=256MB', '-c max_connections=120'];
