@@ -42,3 +42,8 @@ export const tableSeparators = {
   comma: 'comma ,',
   bar: 'bar |',
 };
+
+export const tableDesk = {
+  notLoaded: 'The part of this page that reads files could not be loaded. Reload the page.',
+  notRead: 'The file could not be read.',
+};

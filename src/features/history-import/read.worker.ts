@@ -1,3 +1,4 @@
+import { answerOrders } from '../../components/table-file/desk-client';
 import type { Separator } from '../../components/table-file/separators';
 import type { KnownSubjects, Layout } from '../../domain/history-import/layout';
 import { HistoryDesk, type CheckedHistory, type HistoryFacts, type OrderToSend } from './desk';
@@ -10,32 +11,19 @@ export type DeskOrder = { id: number } & (
   | { kind: 'body'; order: OrderToSend }
 );
 export type DeskAnswer = { id: number } & (
-  | { kind: 'progress'; share: number }
   | { kind: 'file'; facts: HistoryFacts }
   | { kind: 'checked'; checked: CheckedHistory }
   | { kind: 'body'; body: Blob }
-  | { kind: 'fault'; message: string }
 );
 
 const desk = new HistoryDesk();
-const answer = (message: DeskAnswer) => self.postMessage(message);
 
-self.addEventListener('message', ({ data: order }: MessageEvent<DeskOrder>) => {
-  const { id } = order;
-  const onProgress = (share: number) => answer({ id, kind: 'progress', share });
-  try {
-    if (order.kind === 'take')
-      answer({
-        id,
-        kind: 'file',
-        facts: desk.take(order.content, order.known, order.timeZone, onProgress),
-      });
-    else if (order.kind === 'split')
-      answer({ id, kind: 'file', facts: desk.split(order.separator, order.hasHeader, onProgress) });
-    else if (order.kind === 'check')
-      answer({ id, kind: 'checked', checked: desk.check(order.layout, order.nowS, onProgress) });
-    else answer({ id, kind: 'body', body: desk.body(order.order) });
-  } catch (error) {
-    answer({ id, kind: 'fault', message: error instanceof Error ? error.message : String(error) });
-  }
+answerOrders<DeskOrder, DeskAnswer>((order, onProgress) => {
+  if (order.kind === 'take')
+    return { kind: 'file', facts: desk.take(order.content, order.known, order.timeZone, onProgress) };
+  if (order.kind === 'split')
+    return { kind: 'file', facts: desk.split(order.separator, order.hasHeader, onProgress) };
+  if (order.kind === 'check')
+    return { kind: 'checked', checked: desk.check(order.layout, order.nowS, onProgress) };
+  return { kind: 'body', body: desk.body(order.order) };
 });

@@ -5,7 +5,8 @@ import { ApiError } from '../../lib/api';
 import type { HistoryImportView, HistoryPage } from '../../schemas/api/history-import';
 import { HISTORY_FILE_MAX_BYTES } from '../../schemas/lists-and-limits';
 import type { CheckedHistory, HistoryFacts } from './desk';
-import { DeskClient } from './desk-client';
+import { DeskClient } from '../../components/table-file/desk-client';
+import type { DeskAnswer, DeskOrder } from './read.worker';
 import { sendHistory, takeBack } from './send';
 import { STEP_WORDS } from './words';
 import { historyImportUseHistoryImport } from '../../words/history-import';
@@ -19,7 +20,7 @@ const PASTED = historyImportUseHistoryImport.pastedCells;
 
 /** One import from the file to what is kept, and what was imported before. */
 export function useHistoryImport(initial: HistoryPage) {
-  const desk = useRef<DeskClient | null>(null);
+  const desk = useRef<DeskClient<DeskOrder, DeskAnswer> | null>(null);
   const [imports, setImports] = useState(initial.imports);
   const [name, setName] = useState<string | null>(null);
   const [facts, setFacts] = useState<HistoryFacts | null>(null);
@@ -34,7 +35,9 @@ export function useHistoryImport(initial: HistoryPage) {
   const abort = useRef<AbortController | null>(null);
 
   useEffect(() => {
-    const client = new DeskClient();
+    const client = new DeskClient<DeskOrder, DeskAnswer>(
+      new Worker(new URL('./read.worker.ts', import.meta.url), { type: 'module' }),
+    );
     desk.current = client;
     return () => {
       abort.current?.abort();

@@ -1,3 +1,4 @@
+import { answerOrders } from '../../components/table-file/desk-client';
 import type { Separator } from '../../components/table-file/separators';
 import type { KnownNames } from '../../domain/commissioning/import/table';
 import { Desk, type CheckedFile, type CheckOrder, type FileFacts } from './desk';
@@ -9,30 +10,14 @@ export type DeskOrder = { id: number } & (
   | { kind: 'check'; order: CheckOrder; names: KnownNames }
 );
 export type DeskAnswer = { id: number } & (
-  | { kind: 'progress'; share: number }
-  | { kind: 'file'; facts: FileFacts }
-  | { kind: 'checked'; checked: CheckedFile }
-  | { kind: 'fault'; message: string }
+  { kind: 'file'; facts: FileFacts } | { kind: 'checked'; checked: CheckedFile }
 );
 
 const desk = new Desk();
-const answer = (message: DeskAnswer) => self.postMessage(message);
 
-self.addEventListener('message', (event: MessageEvent<DeskOrder>) => {
-  const order = event.data;
-  const { id } = order;
-  const onProgress = (share: number) => answer({ id, kind: 'progress', share });
-  try {
-    if (order.kind === 'take') answer({ id, kind: 'file', facts: desk.take(order.content, onProgress) });
-    else if (order.kind === 'split')
-      answer({ id, kind: 'file', facts: desk.split(order.separator, order.hasHeader, onProgress) });
-    else
-      answer({
-        id,
-        kind: 'checked',
-        checked: desk.check(order.order, order.names, onProgress),
-      });
-  } catch (error) {
-    answer({ id, kind: 'fault', message: error instanceof Error ? error.message : String(error) });
-  }
+answerOrders<DeskOrder, DeskAnswer>((order, onProgress) => {
+  if (order.kind === 'take') return { kind: 'file', facts: desk.take(order.content, onProgress) };
+  if (order.kind === 'split')
+    return { kind: 'file', facts: desk.split(order.separator, order.hasHeader, onProgress) };
+  return { kind: 'checked', checked: desk.check(order.order, order.names, onProgress) };
 });

@@ -11,7 +11,8 @@ import { ApiError } from '../../lib/api';
 import type { ImportOutcome, ImportPage } from '../../schemas/api/import';
 import { IMPORT_STEPS } from '../../schemas/lists-and-limits';
 import type { CheckedFile, FileFacts } from './desk';
-import { DeskClient } from './desk-client';
+import { DeskClient } from '../../components/table-file/desk-client';
+import type { DeskAnswer, DeskOrder } from './check.worker';
 import type { Separator } from '../../components/table-file/separators';
 import { sendImport, type Progress } from './send';
 import { STEP_WORDS } from './words';
@@ -48,7 +49,7 @@ export function faultsOf(error: ApiError): CellFault[] {
 
 /** One import from the file to what is kept: what is known, what is under way, what the person may do. */
 export function useImport(initial: ImportPage) {
-  const desk = useRef<DeskClient | null>(null);
+  const desk = useRef<DeskClient<DeskOrder, DeskAnswer> | null>(null);
   const [name, setName] = useState<string | null>(null);
   const [facts, setFacts] = useState<FileFacts | null>(null);
   const [fileFault, setFileFault] = useState<string | null>(null);
@@ -64,7 +65,9 @@ export function useImport(initial: ImportPage) {
   const abort = useRef<AbortController | null>(null);
 
   useEffect(() => {
-    const client = new DeskClient();
+    const client = new DeskClient<DeskOrder, DeskAnswer>(
+      new Worker(new URL('./check.worker.ts', import.meta.url), { type: 'module' }),
+    );
     desk.current = client;
     return () => {
       abort.current?.abort();
@@ -93,10 +96,10 @@ export function useImport(initial: ImportPage) {
       setEdits({});
       setBusy({ words: importUseImport.readingTheFile, share: null, stop: null });
       try {
-        const read = await desk.current?.take(await content(), (share) =>
+        const read = await desk.current?.ask({ kind: 'take', content: await content() }, 'file', (share) =>
           setBusy({ words: importUseImport.readingTheFile, share, stop: null }),
         );
-        if (read) took(read);
+        if (read) took(read.facts);
       } catch (fault) {
         setFileFault(fault instanceof Error ? fault.message : String(fault));
       } finally {
@@ -126,8 +129,13 @@ export function useImport(initial: ImportPage) {
   const split = useCallback(
     async (separator: Separator, hasHeader: boolean) => {
       try {
-        const read = await desk.current?.split(separator, hasHeader);
-        if (read) took(read);
+        const order = {
+          kind: 'split',
+          separator,
+          ...(hasHeader === undefined ? {} : { hasHeader }),
+        } as const;
+        const read = await desk.current?.ask(order, 'file');
+        if (read) took(read.facts);
         setFileFault(null);
       } catch (fault) {
         setFileFault(fault instanceof Error ? fault.message : String(fault));
@@ -149,11 +157,13 @@ export function useImport(initial: ImportPage) {
     setOutcome(null);
     setError(null);
     try {
-      const found = await desk.current.check(
-        { match, hasHeader: facts.hasHeader, choices, edits },
-        initial.names,
+      const order = { match, hasHeader: facts.hasHeader, choices, edits };
+      const answer = await desk.current.ask(
+        { kind: 'check', order, names: initial.names },
+        'checked',
         (share) => mine === turn.current && setBusy({ words, share, stop: null }),
       );
+      const found = answer.checked;
       if (mine !== turn.current) return;
       setChecked(found);
       if (hasFaults(found.faults)) return;
