@@ -1,3 +1,10 @@
+import type { EventItem } from '../schemas/api/now';
+import type { Change } from '../schemas/live';
+
+/** Whether a change tells of one of these events; where some were left out it may. */
+export const tells = (change: Change, which: (event: EventItem) => boolean): boolean =>
+  change.leftOut === true || (change.events ?? []).some(which);
+
 /**
  * A list with what has come in: entries of the same key replaced in place, new ones added at the end. The list
  * itself comes back when nothing came, so that nothing is drawn again.

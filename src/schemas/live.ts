@@ -52,6 +52,7 @@ export const change = z.object({
   inverters: z.array(inverterNow).optional(), // site, string
   gateways: z.array(gatewayNow).optional(), // site
   events: z.array(eventItem).optional(), // newest last
+  leftOut: z.literal(true).optional(), // older events than these came too, more than are sent: read what is stored
   heard: z.array(heardItem).optional(), // roll-call, newest last
   rollCallStopped: z.boolean().optional(),
   notices: noticesNow.optional(), // notices

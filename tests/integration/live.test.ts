@@ -290,6 +290,38 @@ describe('the cursor', () => {
     );
   });
 
+  it('says that some were left out where more came than are sent; a roll call gets every answer then', async () => {
+    const inbox = await browse(ANALYST);
+    subscribe(inbox, `site:${site.ref}`);
+    subscribe(inbox, `roll-call:${site.ref}`);
+    const { cursor } = await inbox.next('snapshot', (m) => m.topic.startsWith('roll-call'));
+    await db.owner.query(
+      `insert into event (at, organisation_id, site_id, kind, detail)
+       select now(), organisation_id, id, 'command', jsonb_build_object('flood', n)
+       from site, generate_series(1, 2001) n where id = $1`,
+      [site.id],
+    );
+    await wake();
+    const { rows } = await db.owner.query<{ n: number }>(
+      'select count(*)::int as n from heard where site_id = $1',
+      [site.id],
+    );
+    const some = await inbox.next('delta', (m) => m.topic.startsWith('site') && m.change.leftOut === true);
+    expect(some.change.events).toHaveLength(2000);
+    const roll = await inbox.next('delta', (m) => m.topic.startsWith('roll') && m.change.leftOut === true);
+    expect(roll.change.heard).toHaveLength(rows[0]!.n);
+    const again = await browse(ANALYST);
+    for (const topic of ['site', 'roll-call']) subscribe(again, `${topic}:${site.ref}`, cursor);
+    const back = await again.next('delta', (m) => m.topic.startsWith('site'));
+    expect([back.change.events?.length, back.change.leftOut]).toEqual([500, true]);
+    const heard = await again.next('delta', (m) => m.topic.startsWith('roll'));
+    expect([heard.change.heard?.length, heard.change.leftOut]).toEqual([rows[0]!.n, true]);
+    // and what comes after it is told as ever
+    await addEvent(db.owner, site.id, 'after the flood');
+    await wake();
+    await until(async () => notesIn(again).includes('after the flood'), 'the next one is told');
+  });
+
   it('goes on by itself when the connection that listens for notices is lost', async () => {
     const inbox = await browse(ANALYST);
     subscribe(inbox, `site:${site.ref}`);

@@ -7,6 +7,7 @@ import { clockOrDate, clockSeconds, fullTime } from '../../drawings/times';
 import { commandWords } from '../../domain/verdicts/event-words';
 import { api } from '../../lib/api';
 import { useLive } from '../../lib/live-hook';
+import { tells } from '../../lib/patch';
 import { queryClient } from '../../lib/query-client';
 import { paths } from '../../schemas/paths';
 import type { SiteTraces } from '../../schemas/api/trace';
@@ -70,7 +71,7 @@ export function TraceSheet({ siteId, stringId, timeZone }: Props) {
     client,
   );
   useLive(stringId ? `string:${stringId}` : `site:${siteId}`, (change, kind) => {
-    if (kind === 'delta' && change.events?.some((e) => e.kind === 'command'))
+    if (kind === 'delta' && tells(change, (e) => e.kind === 'command'))
       // the first seconds of a trace follow the command
       for (const afterMs of [0, 2500, 5000, 10_000])
         setTimeout(() => void client.invalidateQueries({ queryKey: key }), afterMs);

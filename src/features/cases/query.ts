@@ -2,6 +2,7 @@ import { useMutation, useQuery } from '@tanstack/react-query';
 import { useState } from 'react';
 import { useLive } from '../../lib/live-hook';
 import { api, ApiError } from '../../lib/api';
+import { tells } from '../../lib/patch';
 import { queryClient } from '../../lib/query-client';
 import type { CaseChangeBody, CaseEntry, CasePage, CasesPage, CasesView } from '../../schemas/api/cases';
 import { paths } from '../../schemas/paths';
@@ -61,7 +62,7 @@ export function useCase(initial: CasePage) {
   );
   const take = (page: CasePage) => client.setQueryData(caseKey(id), page);
   const status = useLive(`site:${siteId}`, (change, how) => {
-    if (how === 'delta' && change.events?.some((e) => e.kind.startsWith('case_')))
+    if (how === 'delta' && tells(change, (e) => e.kind.startsWith('case_')))
       void client.invalidateQueries({ queryKey: caseKey(id) });
   });
   const send = useMutation<CasePage, ApiError, Sent>(

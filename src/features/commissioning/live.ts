@@ -1,4 +1,4 @@
-import { replaced } from '../../lib/patch';
+import { replaced, tells } from '../../lib/patch';
 import type { Change } from '../../schemas/live';
 import type { RollCallPage } from '../../schemas/api/roll-call';
 
@@ -21,6 +21,7 @@ export function patchRollCall(page: RollCallPage, change: Change): RollCallPage 
 /** Somebody started or stopped the roll call: the page has to be read again. */
 export const runChanged = (change: Change): boolean =>
   change.rollCallStopped !== undefined ||
-  (change.events ?? []).some(
+  tells(
+    change,
     (e) => e.kind === 'roll_call_started' || e.kind === 'roll_call_stopped' || e.kind === 'roster_changed',
   );

@@ -8,7 +8,7 @@ import { Segmented } from '../../components/ui/Segmented';
 import { late } from '../../lib/late';
 import { api } from '../../lib/api';
 import { useLive } from '../../lib/live-hook';
-import { replaced } from '../../lib/patch';
+import { replaced, tells } from '../../lib/patch';
 import { queryClient } from '../../lib/query-client';
 import { useViewInUrl } from '../../lib/view-in-url';
 import type { MembershipPage, MembershipView } from '../../schemas/api/membership';
@@ -52,7 +52,7 @@ export function MembershipBoard({ initial, view: asked, mayWrite }: Props) {
     client.setQueryData<MembershipPage>(key, (old) =>
       old ? { ...old, strings: replaced(old.strings, news.strings, (s) => s.id) } : old,
     );
-    if (how === 'delta' && (news.events ?? []).some((e) => e.kind === 'roster_changed')) void refetch();
+    if (how === 'delta' && tells(news, (e) => e.kind === 'roster_changed')) void refetch();
   });
   const [review, setReview] = useState<[SlotRef, SlotRef | null] | null>(null);
   const [string, setString] = useState('');

@@ -28,6 +28,7 @@ import {
   asksForReading,
   changedSite,
   eventsKey,
+  eventsKeys,
   siteKey,
   siteQuery,
   withAcknowledgement,
@@ -64,6 +65,8 @@ export function SiteBoard({ initial, events, kind: initialKind, cases, standing,
       client.setQueryData<EventsRead>(eventsKey(id, kind), (read) =>
         read ? withEvents(read, news, kind) : read,
       );
+    // more came than was sent: the list is read again from its newest on
+    if (change.leftOut) void client.invalidateQueries({ queryKey: eventsKeys(id) });
     if (how === 'delta' && asksForReading(change))
       void client.invalidateQueries({ queryKey: siteKey(id), exact: true });
   });

@@ -1,7 +1,7 @@
 import { infiniteQueryOptions, queryOptions, type InfiniteData } from '@tanstack/react-query';
 import type { EventKind } from '../../domain/verdicts/codes';
 import { api } from '../../lib/api';
-import { replaced } from '../../lib/patch';
+import { replaced, tells } from '../../lib/patch';
 import type { AcknowledgeReply } from '../../schemas/api/fleet';
 import type { EventItem } from '../../schemas/api/now';
 import type { EventsPage, SitePage } from '../../schemas/api/site';
@@ -34,7 +34,7 @@ export function changedSite(page: SitePage, change: Change, at: string): SitePag
 /** What a change says that only the whole page tells: who commanded, who took a hazard on, loggers, roll call. */
 export const asksForReading = (change: Change): boolean =>
   change.causes !== undefined ||
-  (change.events ?? []).some((e) =>
+  tells(change, (e) =>
     [
       'command',
       'hazard_acknowledged',
@@ -52,7 +52,9 @@ export const withAcknowledgement = (page: SitePage, reply: AcknowledgeReply): Si
 });
 
 export type KindWanted = EventKind | 'all';
-export const eventsKey = (site: string, kind: KindWanted) => ['site', site, 'events', kind] as const;
+/** Of the events of every kind; with the kind after it, of one. */
+export const eventsKeys = (site: string) => ['site', site, 'events'] as const;
+export const eventsKey = (site: string, kind: KindWanted) => [...eventsKeys(site), kind] as const;
 export const EVENTS_AT_ONCE = 20;
 
 export const eventsQuery = (site: string, kind: KindWanted, initial: EventsPage | undefined) =>

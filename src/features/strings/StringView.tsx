@@ -12,6 +12,7 @@ import { Sheet } from '../../components/ui/Sheet';
 import { withQuery } from '../../lib/api';
 import { late } from '../../lib/late';
 import { useLive } from '../../lib/live-hook';
+import { tells } from '../../lib/patch';
 import { queryClient } from '../../lib/query-client';
 import { useViewInUrl } from '../../lib/view-in-url';
 import type { StringHistory, StringPage } from '../../schemas/api/string';
@@ -73,7 +74,7 @@ function useStringLive(initial: StringPage) {
       };
     });
     // the judgement's evidence comes with the page, not by the wire
-    if (change.events?.length) void client.invalidateQueries({ queryKey: options.queryKey, exact: true });
+    if (tells(change, () => true)) void client.invalidateQueries({ queryKey: options.queryKey, exact: true });
   });
   return { page: result.data, failed: result.isRefetchError ? result.error : null, status };
 }

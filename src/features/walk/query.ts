@@ -1,4 +1,4 @@
-import { replaced } from '../../lib/patch';
+import { replaced, tells } from '../../lib/patch';
 import { api } from '../../lib/api';
 import type { Change } from '../../schemas/live';
 import type { WalkPage } from '../../schemas/api/walk';
@@ -21,5 +21,4 @@ export function patchWalk(page: WalkPage, change: Change, at: string): WalkPage 
 }
 
 /** The as-built was changed: places, serials and readings have to be read again. */
-export const asBuiltChanged = (change: Change): boolean =>
-  (change.events ?? []).some((e) => e.kind === 'roster_changed');
+export const asBuiltChanged = (change: Change): boolean => tells(change, (e) => e.kind === 'roster_changed');

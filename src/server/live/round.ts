@@ -1,7 +1,7 @@
 import type { CauseNow, SiteNow } from '../../schemas/api/now';
 import type { Change } from '../../schemas/live';
 import { asIngest, type Tx } from '../db/transaction';
-import { eventsBetween, horizon, rollCallOpen, type LiveEvent } from '../queries/live';
+import { eventsBetween, horizon, rollCallOpen, type Events, type LiveEvent } from '../queries/live';
 import { gatewaysNow, invertersNow, stringsNow } from '../queries/now';
 import { answersOf } from '../queries/roll-call';
 import { sitesNow } from '../queries/sites-now';
@@ -29,6 +29,7 @@ export interface Delta<L extends Listening> {
   change: Change;
 }
 
+/** Of more than these the newest are sent, and that some were left out. */
 const EVENTS_A_ROUND = 2000;
 
 const isBelow = (a: string, b: string): boolean => BigInt(a) < BigInt(b);
@@ -45,12 +46,13 @@ export async function readNews<L extends Listening>(
   return asIngest(async (tx) => {
     const at = new Date();
     const { below: to, held } = await horizon(tx);
-    const events = await missedEvents(tx, listening, to);
+    const { events, leftOut } = await missedEvents(tx, listening, to);
     const changed = await changedStrings(tx, at, strings);
     const deltas: Delta<L>[] = [];
     for (const l of listening) {
       const mine = events.filter((e) => concerns(e, l.subject) && !isBelow(e.xid, l.cursor));
-      const change = await newsFor(tx, l.subject, mine, changed);
+      const some = isOfSite(l.subject) && leftOut !== null && !isBelow(leftOut, l.cursor);
+      const change = await newsFor(tx, l.subject, mine, some, changed);
       deltas.push({ to: l, cursor: isBelow(l.cursor, to) ? to : l.cursor, change });
     }
     return { deltas, held };
@@ -75,10 +77,10 @@ const concerns = (event: LiveEvent, subject: Subject): boolean =>
   event.siteNumber === subject.siteId &&
   (subject.kind !== 'string' || event.stringNumber === subject.stringId);
 
-async function missedEvents(tx: Tx, listening: readonly Listening[], to: string): Promise<LiveEvent[]> {
+async function missedEvents(tx: Tx, listening: readonly Listening[], to: string): Promise<Events> {
   const siteIds = new Set(listening.flatMap((l) => atSite(l) ?? []));
   const from = listening.reduce((low, l) => (isBelow(l.cursor, low) ? l.cursor : low), to);
-  if (siteIds.size === 0 || !isBelow(from, to)) return [];
+  if (siteIds.size === 0 || !isBelow(from, to)) return { events: [], leftOut: null };
   return eventsBetween(tx, from, to, { siteIds: [...siteIds] }, EVENTS_A_ROUND);
 }
 
@@ -100,6 +102,7 @@ async function newsFor(
   tx: Tx,
   subject: Subject,
   events: readonly LiveEvent[],
+  leftOut: boolean,
   changed: ReadonlyMap<number, Change['strings']>,
 ): Promise<Change> {
   const change: Change = {};
@@ -107,13 +110,14 @@ async function newsFor(
   const here = changed.get(subject.siteId);
   const strings = subject.kind === 'string' ? here?.filter((s) => s.id === subject.ref) : here;
   if (strings && strings.length > 0) change.strings = strings;
+  if (leftOut) change.leftOut = true;
   if (subject.kind !== 'roll-call') {
     if (events.length > 0) change.events = eventItemsOf(events);
     return change;
   }
-  const serials = serialsHeard(events);
-  if (serials.length > 0) change.heard = await answersOf(tx, subject.siteId, serials);
-  if (events.some((e) => e.kind === 'roll_call_stopped' || e.kind === 'roll_call_started'))
+  const serials = leftOut ? undefined : serialsHeard(events);
+  if (serials?.length !== 0) change.heard = await answersOf(tx, subject.siteId, serials);
+  if (leftOut || events.some((e) => e.kind === 'roll_call_stopped' || e.kind === 'roll_call_started'))
     change.rollCallStopped = !(await rollCallOpen(tx, subject.siteId));
   return change;
 }

@@ -37,7 +37,7 @@ const PERMISSION: Record<Subject['kind'], Permission> = {
   'roll-call': 'roll_call.read',
 };
 export const EVENTS_SHOWN = 50;
-/** Who was away for long gets the newest of what was missed; the pages have the rest. */
+/** Who was away for long gets the newest of what was missed, and that some were left out. */
 const EVENTS_MISSED = 500;
 
 export const NOT_FOR_YOU = 'This topic is for the people who look after sites.';
@@ -127,12 +127,16 @@ export async function snapshotOf(
       earlier === undefined
         ? null
         : await eventsBetween(tx, earlier, cursor, { siteIds, stringId }, EVENTS_MISSED);
+    const some = missed !== null && missed.leftOut !== null;
+    if (some && isOfSite(subject)) change.leftOut = true;
     if (subject.kind === 'roll-call') {
-      change.heard = await answersOf(tx, subject.siteId, missed ? serialsHeard(missed) : undefined);
+      const serials = missed && !some ? serialsHeard(missed.events) : undefined;
+      change.heard = await answersOf(tx, subject.siteId, serials);
       if (!(await rollCallOpen(tx, subject.siteId))) change.rollCallStopped = true;
     } else if (subject.kind !== 'fleet')
       change.events = eventItemsOf(
-        missed ?? (await newestEvents(tx, cursor, { siteId: subject.siteId, stringId }, EVENTS_SHOWN)),
+        missed?.events ??
+          (await newestEvents(tx, cursor, { siteId: subject.siteId, stringId }, EVENTS_SHOWN)),
       );
     return { kind: missed ? 'delta' : 'snapshot', cursor, change };
   });

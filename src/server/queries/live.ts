@@ -41,6 +41,12 @@ const toEvent = (row: EventRow): LiveEvent => ({
   recordedAt: row.recordedAt.toISOString(),
 });
 
+/** Events in the order of their cursors. `leftOut`: the cursor of the newest of those that were left out; null: none. */
+export interface Events {
+  events: LiveEvent[];
+  leftOut: string | null;
+}
+
 /** Events with `from` ≤ xid < `to`, oldest first; of a longer list the newest `limit`. */
 export async function eventsBetween(
   tx: Tx,
@@ -48,14 +54,14 @@ export async function eventsBetween(
   to: string,
   which: { siteIds: readonly number[]; stringId?: number | undefined },
   limit: number,
-): Promise<LiveEvent[]> {
+): Promise<Events> {
   const { rows } = await tx.raw<{ rows: EventRow[] }>(
     `${EVENT} where e.xid >= :from::text::xid8 and e.xid < :to::text::xid8 and e.site_id = any (:siteIds::int4[])
        and (:stringId::int4 is null or e.string_id = :stringId)
      order by e.xid desc, e.id desc limit :limit`,
-    { from, to, siteIds: [...which.siteIds], stringId: which.stringId ?? null, limit },
+    { from, to, siteIds: [...which.siteIds], stringId: which.stringId ?? null, limit: limit + 1 },
   );
-  return rows.map(toEvent).reverse();
+  return { events: rows.slice(0, limit).map(toEvent).reverse(), leftOut: rows[limit]?.xid ?? null };
 }
 
 /** The newest events of a site or a string whose transactions are below `to`, oldest first. */
