@@ -1,5 +1,5 @@
 import { counted, countAtStart } from '../drawings/numbers';
-import type { JobKindLine, JobsPage } from '../schemas/api/jobs';
+import type { JobFailure, JobKindLine, JobsPage } from '../schemas/api/jobs';
 
 /** "0.4 s", "2 min". */
 export function took(ms: number | null): string {
@@ -34,11 +34,28 @@ export function jobsFinding(page: JobsPage): { finding: string; sentence: string
   };
 }
 
-/** A job that comes by the clock and has not begun for ten minutes longer than it should. */
-export function isLate(kind: JobKindLine, at: string): boolean {
-  if (kind.next === null || kind.last === null) return false;
-  const every = 3_600_000;
-  return Date.parse(at) - Date.parse(kind.last.startedAt) > every + 600_000;
+const LATE_FROM_MS = 600_000;
+
+/** A job that comes by the clock and has not begun ten minutes after it was to. */
+export const isLate = ({ due }: JobKindLine, at: string): boolean =>
+  due !== null && Date.parse(at) - Date.parse(due) > LATE_FROM_MS;
+
+/** Why a job failed, as a manager reads it; `said`: the program's own words where it was made for no such failure. */
+export function failedWords(why: JobFailure, said: string): string {
+  switch (why) {
+    case 'said':
+      return said;
+    case 'locked':
+      return 'Something else held the rows that it needed for longer than it waits. Nothing is to be done; if it goes on for an hour, have the database looked at for a transaction that does not end.';
+    case 'too_long':
+      return 'The database did not finish one of its steps in the time that a step may take. If it goes on, the database has too much to do: see the status page.';
+    case 'full':
+      return 'The database has run out of disk or memory. It goes on by itself once there is room.';
+    case 'away':
+      return 'The database could not be reached, or had no connection free for as long as one waits. If it goes on, see the status page.';
+    case 'unforeseen':
+      return `It met something that it was not made for. For whoever looks after the installation: "${said}"`;
+  }
 }
 
 /** "12 quarters, 3 redone": what a run did; nothing: an empty text. */

@@ -5,6 +5,9 @@ import { z } from 'zod';
 export const retryBody = z.object({ job: z.string().regex(/^\d{1,18}$/, 'No such job.') });
 export type RetryBody = z.infer<typeof retryBody>;
 
+/** Why a job failed; `said`: in words that were written for people. */
+export type JobFailure = 'said' | 'locked' | 'too_long' | 'full' | 'away' | 'unforeseen';
+
 export interface JobRun {
   startedAt: string;
   /** null: it runs, or its process died. */
@@ -22,6 +25,8 @@ export interface JobKindLine {
   last: JobRun | null;
   /** null: only when something asks for it. */
   next: string | null;
+  /** When it was to run after its last run; null: no run yet, or nothing but asking makes it run. */
+  due: string | null;
   runs24h: number;
   failed24h: number;
   usualMs: number | null;

@@ -2,7 +2,9 @@ import { randomUUID } from 'node:crypto';
 import type { JobHelpers, Task } from 'graphile-worker';
 import { z } from 'zod';
 import { database } from '../db/pools';
-import { isDatabaseAway } from '../errors';
+import type { JobFailure } from '../../schemas/api/jobs';
+import { failedWords } from '../../words/jobs-sentences';
+import { AppError, isDatabaseAway } from '../errors';
 import { log } from '../log';
 import { meters } from '../observe/meters';
 import { beginRun, endRun } from '../queries/job-runs';
@@ -14,6 +16,20 @@ const sitePayload = z.object({ siteId: z.int() });
 
 /** What a job did, in counts; nothing worth counting: empty. */
 export type Done = Record<string, number>;
+
+/** Why a job failed, by what was thrown. */
+export function failureOf(error: unknown): JobFailure {
+  if (error instanceof AppError) return 'said';
+  const code = (error as { code?: unknown } | null)?.code;
+  if (code === '55P03' || code === '40P01') return 'locked';
+  if (code === '57014') return 'too_long';
+  if (code === '53100' || code === '53200') return 'full';
+  return isDatabaseAway(error) ? 'away' : 'unforeseen';
+}
+
+/** What the page says of a failure: never what a library thinks of its own settings. */
+const wordsOf = (error: unknown): string =>
+  failedWords(failureOf(error), (error instanceof Error ? error.message : String(error)).slice(0, 1500));
 
 /**
  * A task that writes down each of its runs: when it began, how it ended, what it did. A failure is written down and
@@ -36,10 +52,10 @@ export function recorded(task: string, work: (payload: unknown, helpers: JobHelp
     } catch (error) {
       timed('failed');
       meters().jobsFailed.add(1, { kind: task });
-      const failed = error instanceof Error ? error.message : String(error);
+      const failed = wordsOf(error);
       if (!isDatabaseAway(error)) log.error({ error, task }, 'a job failed; it is tried again');
-      await endRun(db, id, { at: new Date(), failed: failed.slice(0, 2000), done }).catch(() => undefined);
-      throw error;
+      await endRun(db, id, { at: new Date(), failed, done }).catch(() => undefined);
+      throw new Error(failed, { cause: error }); // the queue keeps its message
     }
     if (Object.values(done).some((n) => n > 0)) log.debug({ task, ...done }, 'a job did its work');
   };

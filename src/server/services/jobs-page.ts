@@ -33,6 +33,9 @@ export function nextRun(cron: string, at: Date): Date | null {
   return null;
 }
 
+const nextOf = ({ cron }: JobKind, at: Date): string | null =>
+  cron === null ? null : (nextRun(cron, at)?.toISOString() ?? null);
+
 const kindOf = (task: string): JobKind | undefined => (JOBS as Record<string, JobKind | undefined>)[task];
 const titleOf = (task: string): string => kindOf(task)?.title ?? task;
 
@@ -86,7 +89,8 @@ export async function jobsPage(tx: Tx, at: Date): Promise<JobsPage> {
       task,
       title: kind.title,
       last: run ? runOf(run) : null,
-      next: kind.cron === null ? null : (nextRun(kind.cron, at)?.toISOString() ?? null),
+      next: nextOf(kind, at),
+      due: run ? nextOf(kind, run.startedAt) : null,
       runs24h: count?.runs24h ?? 0,
       failed24h: count?.failed24h ?? 0,
       usualMs: count?.usualMs ?? null,
