@@ -1,12 +1,18 @@
 import type pg from 'pg';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import type { SeededSite } from '../../seeds/plant/seeded';
+import type { Fault } from '../../simulator/faults/kinds';
 import { checklistOf } from '../../src/domain/cases/checklists';
 import { judgeOutput } from '../../src/domain/output/low-output';
+import { judgeMembership, type Membership } from '../../src/domain/output/membership';
 import { planeReference } from '../../src/domain/output/plane-reference';
 import { fitLoop } from '../../src/domain/output/resistance';
+import { lastingWeakUnits } from '../../src/domain/output/weak-days';
+import { enoughToTell, weakUnits, type WeakUnit } from '../../src/domain/output/weak-unit';
+import { asIngest } from '../../src/server/db/transaction';
 import { judgeNight } from '../../src/server/jobs/output-night';
 import { checkClosedCases } from '../../src/server/services/check-closed-cases';
+import { membershipAt } from '../../src/server/services/membership';
 import { samplesOf } from '../bench/diagnosis/current-scores';
 import {
   outputRun,
@@ -14,7 +20,9 @@ import {
   type OutputFault,
   type OutputRun,
 } from '../bench/diagnosis/output-scenarios';
+import { unitDays } from '../bench/diagnosis/output-scores';
 import { planeOf, planeUntil, reportsOf, type Reports } from '../bench/diagnosis/output-series';
+import { unitTypeOf } from '../bench/diagnosis/plants';
 import { testDatabase, type TestDatabase } from '../support/database';
 import { analystOf, caseOf, closeCase, openCauses, readCase } from '../support/live-plant';
 import { ingestClient, seedDrawn, writeReports } from '../support/pipeline';
@@ -35,17 +43,30 @@ const FIRST_MS = Date.UTC(2026, 9, 1);
 const dayName = (d: number): string => new Date(FIRST_MS + d * 86_400_000).toISOString().slice(0, 10);
 const night = (d: number): Date => new Date(FIRST_MS + (d + 1) * 86_400_000 - 3_600_000);
 
+type LabelledFault = OutputFault | Extract<Fault, { kind: 'string_isolated' }>;
+
 /** Twelve strings under one sky, with one of each fault of the output from the first day on. */
-function labelled(): { run: OutputRun; faults: Map<string, OutputFault> } {
+function labelled(): { run: OutputRun; faults: Map<string, LabelledFault> } {
   const drawn = outputRun(RUN);
-  const names = drawn.drawn.plan.strings.map((s) => s.name);
-  const [dirty, bypassed, connector, swapped, other] = names as [string, string, string, string, string];
-  const faults = new Map<string, OutputFault>([
-    [dirty, { kind: 'soiling', string: dirty, share: 0.18 }],
-    [bypassed, { kind: 'bypass_diode', string: bypassed, position: 4, groups: 1 }],
-    [connector, { kind: 'connector', string: connector, ohm: 0.6 }],
-    [swapped, { kind: 'wrong_string', string: swapped, position: 2, otherString: other, otherPosition: 5 }],
-  ]);
+  // home runs of one length: a long one among short ones looks like a bad connector, which is the bench's question
+  for (const s of drawn.drawn.plan.strings) s.cableResistance = 0.36;
+  const name = (k: number): string => drawn.drawn.plan.strings[k]!.name;
+  const each: LabelledFault[] = [
+    { kind: 'soiling', string: name(0), share: 0.18 },
+    { kind: 'bypass_diode', string: name(1), position: 4, groups: 1 },
+    { kind: 'connector', string: name(2), ohm: 0.6 },
+    { kind: 'wrong_string', string: name(3), position: 2, otherString: name(4), otherPosition: 5 },
+    {
+      kind: 'shade',
+      string: name(5),
+      positions: [1, 2, 3, 4, 5, 6, 7, 8],
+      fromHour: 8,
+      toHour: 11.5,
+      share: 0.8,
+    },
+    { kind: 'string_isolated', string: name(6) },
+  ];
+  const faults = new Map(each.map((fault) => [fault.string, fault]));
   const run: OutputRun = {
     ...drawn,
     days: DAYS,
@@ -55,7 +76,7 @@ function labelled(): { run: OutputRun; faults: Map<string, OutputFault> } {
       fromS: drawn.drawn.fromS - 86_400,
       toS: drawn.drawn.fromS + FAULTY_DAYS * 86_400 - 3600, // in the dark before the first sound day
     })),
-    ofString: faults,
+    ofString: new Map(), // what the bench scores by: nothing is scored here
     swaps: [],
     snow: [],
     cutOff: null,
@@ -70,7 +91,8 @@ let client: pg.Client;
 let site: SeededSite;
 let reports: Reports;
 const { run, faults } = labelled();
-const faulty = (kind: OutputFault['kind']): string => [...faults].find(([, f]) => f.kind === kind)?.[0] ?? '';
+const faulty = (kind: LabelledFault['kind']): string =>
+  [...faults].find(([, f]) => f.kind === kind)?.[0] ?? '';
 
 beforeAll(async () => {
   db = await testDatabase();
@@ -127,7 +149,7 @@ describe('a labelled plant through the pipeline', { timeout: 300_000 }, () => {
         const ratio = reference.ratio[k]![d]!;
         if (Number.isNaN(ratio)) expect(row.ratio).toBeNull();
         // a report without one of its units is none to the bench; a quarter here still has the others
-        else expect(Math.abs((row.ratio ?? NaN) - ratio)).toBeLessThan(0.03);
+        else expect([where, Math.abs((row.ratio ?? NaN) - ratio) < 0.03]).toEqual([where, true]);
       }
     }
   });
@@ -138,11 +160,82 @@ describe('a labelled plant through the pipeline', { timeout: 300_000 }, () => {
     expect(found).toEqual(
       [
         `low_output ${faulty('soiling')}`,
+        `low_output ${faulty('shade')}`,
+        `low_output ${faulty('string_isolated')}`,
         `weak_unit ${faulty('bypass_diode')}`,
         `loop_resistance ${faulty('connector')}`,
         `wrong_string ${[swap.string, swap.otherString].sort().join('+')}`,
       ].sort(),
     );
+  });
+
+  it('says of shade that it comes back with the sun, and of a string whose switch is open what else it could be', async () => {
+    const { rows } = await db.owner.query<{ name: string; signature: string; ratio: number; words: string }>(
+      `select s.name, o.signature, o.ratio, o.finding ->> 'words' as words from output_day o join string s on s.id = o.string_id
+       where o.day = $1 and o.outcome = 'low'`,
+      [dayName(FAULTY_DAYS - 1)],
+    );
+    const of = (kind: LabelledFault['kind']) => rows.find((r) => r.name === faulty(kind));
+    expect(of('shade')?.signature).toBe('shade');
+    expect(of('string_isolated')).toMatchObject({ signature: 'current_low' });
+    expect(of('string_isolated')?.words).toContain('it carries no current at all');
+    const cause = await db.owner.query<{ alternatives: string[] }>(
+      `select alternatives from cause where kind = 'low_output' and shared_part ->> 'name' = $1`,
+      [faulty('string_isolated')],
+    );
+    expect(cause.rows[0]?.alternatives).toContain('its load-break device is open');
+  });
+
+  it('tells weak units as the pure function does on the same reports, figure by figure', async () => {
+    const { rows } = await db.owner.query<{ string: string; finding: WeakUnit }>(
+      `select units -> 0 ->> 'stringName' as string, figures -> 'finding' as finding from cause where kind = 'weak_unit'`,
+    );
+    const days = [4, 3, 2, 1].map((back) => FAULTY_DAYS - back);
+    const pure = run.drawn.plan.strings.flatMap((s, k) => {
+      const day = unitDays(run, reports, k);
+      const weak = days.map((d) => (enoughToTell(day(d)) ? weakUnits(day(d)) : null));
+      return lastingWeakUnits(weak).map((finding) => ({ string: s.name, finding }));
+    });
+    const label = ({ string, finding }: (typeof rows)[number]) => [
+      string,
+      finding.unit,
+      finding.kind,
+      finding.count,
+    ];
+    expect(rows.map(label)).toEqual(pure.map(label));
+    rows.forEach(({ finding }, i) => {
+      expect(finding.ratio).toBeCloseTo(pure[i]!.finding.ratio, 2);
+      expect(Math.abs(finding.share - pure[i]!.finding.share)).toBeLessThan(0.06);
+      expect(finding.threshold.ratio).toBeCloseTo(pure[i]!.finding.threshold.ratio, 2);
+    });
+  });
+
+  it('tells of every unit whose current it carries, as the pure function does', async () => {
+    const d = FAULTY_DAYS - 1;
+    const { units } = await asIngest((tx) =>
+      membershipAt(tx, site.id, 24, new Date(FIRST_MS + (d + 1) * 86_400_000)),
+    );
+    const day = (c: Float64Array): Float64Array => c.subarray(d * STEPS_A_DAY, (d + 1) * STEPS_A_DAY);
+    const carrying = reports.strings.filter((s) => s.current.some((c) => day(c).some((i) => i >= 0.5)));
+    expect(carrying.map((s) => s.name)).not.toContain(faulty('string_isolated'));
+    const pure = new Map(
+      judgeMembership(
+        carrying.map((s) => ({ name: s.name, currents: s.current.map(day) })),
+        { accuracy: unitTypeOf(run.drawn.plan).currentAccuracy },
+      ).map((m) => [`${m.string}:${m.unit + 1}`, m]),
+    );
+    const said = (of: (m: Membership) => unknown): unknown[] =>
+      units.map((u) => {
+        const m = pure.get(`${u.string}:${u.position}`);
+        return [u.string, u.position, m ? of(m) : 'no current'];
+      });
+    expect(
+      units.map((u) => [
+        u.string,
+        u.position,
+        pure.has(`${u.string}:${u.position}`) ? `${u.outcome} ${u.otherString ?? ''}` : 'no current',
+      ]),
+    ).toEqual(said((m) => `${m.outcome} ${m.otherString ?? ''}`));
   });
 
   it('a night judged twice, by two workers at once or again later, changes nothing', async () => {
@@ -157,8 +250,22 @@ describe('a labelled plant through the pipeline', { timeout: 300_000 }, () => {
     expect([await causes(), await events()]).toEqual(before);
   });
 
+  it('says of each string what it truly made of what its sound twin did, shade and dirt too', async () => {
+    const { rows } = await db.owner.query<{ name: string; ratio: number; d: number }>(
+      `select s.name, o.ratio, o.day - $1::date as d from output_day o join string s on s.id = o.string_id`,
+      [dayName(0)],
+    );
+    const apart = rows.flatMap(({ name, ratio, d }) => {
+      const r = reports.strings[run.drawn.plan.strings.findIndex((s) => s.name === name)]!;
+      const truly = r.gaveWh[d]! / r.twinWh[d]!;
+      return Math.abs(ratio - truly) < 0.02 ? [] : [`${name} on day ${d}: ${ratio} of ${truly}`];
+    });
+    expect(rows).toHaveLength(NIGHTS.length * run.drawn.plan.strings.length);
+    expect(apart).toEqual([]);
+  });
+
   it('the loss of the low string is what its sound twin made more, each day once', async () => {
-    const [low] = (await causes()).filter((c) => c.kind === 'low_output');
+    const low = (await causes()).find((c) => c.strings.includes(faulty('soiling')));
     const k = run.drawn.plan.strings.findIndex((s) => s.name === faulty('soiling'));
     const r = reports.strings[k]!;
     const truly = r.twinWh.reduce((sum, wh, d) => sum + (d < FAULTY_DAYS ? wh - r.gaveWh[d]! : 0), 0);
@@ -172,7 +279,8 @@ describe('a labelled plant through the pipeline', { timeout: 300_000 }, () => {
        from loop_fit l join string s on s.id = l.string_id where l.day = $1`,
       [dayName(FAULTY_DAYS - 1), dayName(0)],
     );
-    expect(rows).toHaveLength(run.drawn.plan.strings.length);
+    expect(rows.map((r) => r.name)).not.toContain(faulty('string_isolated'));
+    expect(rows).toHaveLength(run.drawn.plan.strings.length - 1);
     for (const { name, ohm, from, to } of rows) {
       const k = run.drawn.plan.strings.findIndex((s) => s.name === name);
       const pure = fitLoop(samplesOf(run, reports, k, from, to, 1));
@@ -185,12 +293,19 @@ describe('a labelled plant through the pipeline', { timeout: 300_000 }, () => {
   it('each cause becomes a case; mended, it ends, the case is closed, and the nights after show that it held', async () => {
     const analyst = await analystOf(db);
     const open = await openCauses(db);
-    expect(open.map((c) => c.kind)).toEqual(['loop_resistance', 'low_output', 'weak_unit', 'wrong_string']);
-    const asked: Record<string, string> = {
-      loop_resistance: 'same_meter',
-      low_output: 'soiling',
-      weak_unit: 'module_damage',
-      wrong_string: 'isolate_one',
+    expect(open.map((c) => c.kind)).toEqual([
+      'loop_resistance',
+      'low_output',
+      'low_output',
+      'low_output',
+      'weak_unit',
+      'wrong_string',
+    ]);
+    const asked: Record<string, string[]> = {
+      loop_resistance: ['same_meter'],
+      low_output: ['soiling', 'shade', 'fuses'],
+      weak_unit: ['module_damage'],
+      wrong_string: ['isolate_one'],
     };
     const opened = night(FAULTY_DAYS - 1);
     const cases = new Map<string, string>();
@@ -198,24 +313,32 @@ describe('a labelled plant through the pipeline', { timeout: 300_000 }, () => {
       const ref = await caseOf(analyst, site.ref, cause, opened);
       const { kind } = await readCase(analyst, ref, opened);
       expect(kind).toBe(cause.kind);
-      expect(checklistOf(kind).map((item) => item.key)).toContain(asked[kind]);
+      const keys = checklistOf(kind).map((item) => item.key);
+      // dirt, shade, a switch that is open: one list for all that makes a string low
+      expect(keys).toEqual(expect.arrayContaining(asked[kind] ?? []));
       await closeCase(analyst, ref, 'Cleaned, mated anew, put where the drawing has them.', opened);
-      cases.set(cause.kind, ref);
+      cases.set(cause.headline, ref);
     }
     for (const d of MENDED_NIGHTS) await judgeNight(site.id, dayName(d), night(d));
     expect(await openCauses(db)).toEqual([]);
     const ended = await db.owner.query<{ kind: string; n: number }>(
       `select detail ->> 'kind' as kind, count(*)::int as n from event where kind = 'cause_closed' group by 1 order by 1`,
     );
-    expect(ended.rows).toEqual(open.map(({ kind }) => ({ kind, n: 1 })));
+    expect(ended.rows).toEqual(
+      ['loop_resistance', 'low_output', 'weak_unit', 'wrong_string'].map((kind) => ({
+        kind,
+        n: kind === 'low_output' ? 3 : 1,
+      })),
+    );
     await checkClosedCases(night(DAYS - 1));
-    for (const [kind, ref] of cases) {
+    for (const [headline, ref] of cases) {
       const { outcome, state } = await readCase(analyst, ref, night(DAYS - 1));
-      expect([kind, outcome, state]).toEqual([kind, 'held', 'done']);
+      expect([headline, outcome, state]).toEqual([headline, 'held', 'done']);
     }
     // what it had cost by then stays, and grows no more
-    const low = (await causes()).find((c) => c.kind === 'low_output');
+    const losses = async () => (await causes()).map((c) => c.loss);
+    const before = await losses();
     await judgeNight(site.id, dayName(DAYS - 1), night(DAYS));
-    expect((await causes()).find((c) => c.kind === 'low_output')?.loss).toBe(low?.loss);
+    expect(await losses()).toEqual(before);
   });
 });

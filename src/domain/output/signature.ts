@@ -32,6 +32,8 @@ const BYPASS_SHARE = 0.015;
 const UNCHANGED = 0.03;
 /** Quarters with at least this share of STC power: enough for voltage and current to be told. */
 const BRIGHT = 0.25;
+/** Less than this share of what its siblings give is nothing: what is left is rounding. */
+const NOTHING = 0.02;
 const AZIMUTH_BIN = 10;
 const SHADE_DEPTH = 0.1;
 
@@ -86,6 +88,13 @@ export function signatureOf(
     count: number | null = null,
   ): Signature => ({ kind, words, count, figures, confidence, couldBe });
 
+  if (powers.length > 0 && median(powers) < NOTHING)
+    return made('current_low', 'it carries no current at all', 0.85, [
+      'its load-break device is open',
+      'a fuse has blown',
+      'a connector or a lead is open',
+      'its inverter input is switched off',
+    ]);
   const shade = shadeOf(bins, powers, plane, s.power, s.powerRef, reference.specific, low);
   if (shade !== null) {
     figures.shadeAzimuth = shade;

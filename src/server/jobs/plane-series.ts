@@ -102,8 +102,8 @@ export async function readNightSeries(
     if (!n || row.frames < least || (row.voltage && row.voltage.length !== n.string.slots)) continue;
     const minutes = Math.min(15, (row.frames * site.reportIntervalS) / 60);
     const watts = row.energy / 10 / minutes;
-    energy.get(row.stringId)![q] = watts;
     take(n, row, q, watts);
+    energy.get(row.stringId)![q] = n.string.measures === 'input' ? watts : wholeWatts(n, row, q, watts);
   }
   await takeInputSides(tx, night, span, stepOf);
   const inputs = await readInputs(tx, strings, span, steps, stepOf, least);
@@ -124,8 +124,7 @@ export async function readNightSeries(
       const alone = strings.filter((s) => s.inputId === string.inputId).length === 1;
       const tells = string.measures !== 'input';
       const voltage = tells ? n.sumV : alone && input ? input.voltage : nans(steps);
-      // of units that tell their module's side only, what passes is known by their claims alone
-      const power = tells ? Float64Array.from(voltage, (v, q) => v * n.typicalA[q]!) : energy.get(string.id)!;
+      const power = energy.get(string.id)!;
       return [[seriesOf(string, 'string', { voltage, current: n.typicalA, power }, n.excluded), [string]]];
     });
     const silent = new Map<number, OutputString[]>();
@@ -177,6 +176,17 @@ function gridOf(
     if (sun.elevation > 0) dayOf[q] = day;
   }
   return { dayOf, sunAzimuth };
+}
+
+/**
+ * What the whole string gave, W: the sum over reported units, which in shade is less than mean voltage times mean
+ * current, raised by the voltage of those whose report is missing. NaN: too little is known. Of units that tell their
+ * module's side only, what passes is known by their claims alone.
+ */
+function wholeWatts(n: NightString, row: QuarterRow, q: number, watts: number): number {
+  const reported = row.voltageAvg / 100;
+  const whole = n.sumV[q]! + 0 * n.typicalA[q]!;
+  return reported > 0 ? (watts * whole) / reported : whole * n.typicalA[q]!;
 }
 
 function take(n: NightString, row: QuarterRow, q: number, watts: number): void {

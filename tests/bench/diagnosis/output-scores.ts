@@ -6,7 +6,7 @@ import {
 } from '../../../src/domain/output/plane-reference';
 import { median } from '../../../src/domain/output/robust';
 import type { SignatureKind } from '../../../src/domain/output/signature';
-import { weakUnits } from '../../../src/domain/output/weak-unit';
+import { weakUnits, type UnitVoltages } from '../../../src/domain/output/weak-unit';
 import type { OutputFault, OutputRun } from './output-scenarios';
 import { planeOf, planeUntil, quarters, typicalAt, type Reports } from './output-series';
 import { moduleTypeOf, unitTypeOf } from './plants';
@@ -134,19 +134,30 @@ function baselines(run: OutputRun, plane: PlaneSeries): (number | null)[] {
   });
 }
 
+/** A string's units in quarters, as the judgement of weak units takes them; of a day by its number. */
+export function unitDays(run: OutputRun, reports: Reports, k: number): (d: number) => UnitVoltages {
+  const { bypassGroups } = moduleTypeOf(run.drawn.plan);
+  const r = reports.strings[k]!;
+  // an optimizing unit moves its output, so its input side tells
+  const columns = (unitTypeOf(run.drawn.plan).kind === 'optimizing' ? r.voltageIn : r.voltageOut).map(
+    quarters,
+  );
+  const typical = new Float64Array(reports.steps).fill(NaN);
+  for (let q = 0; q < reports.steps; q++) typical[q] = typicalAt(r.current, q);
+  const current = quarters(typical);
+  return (d) => {
+    const part = (c: Float64Array): Float64Array => c.subarray(d * 96, (d + 1) * 96);
+    return { voltage: columns.map(part), current: part(current), bypassGroups };
+  };
+}
+
 /** Bypassed cells by unit, day by day, and told from a unit that is held in shutdown. */
 export function scoreWeakUnits(run: OutputRun, reports: Reports, score: OutputScore, n: number): void {
   const type = unitTypeOf(run.drawn.plan);
   if (type.kind === 'shutdown_only') return;
-  const { bypassGroups } = moduleTypeOf(run.drawn.plan);
   const daysLit = Array.from({ length: run.days }, (_, d) => d).filter((d) => reports.insolation[d]! >= 1);
   run.drawn.plan.strings.forEach((s, k) => {
-    const r = reports.strings[k]!;
-    // an optimizing unit moves its output, so its input side tells
-    const columns = (type.kind === 'optimizing' ? r.voltageIn : r.voltageOut).map(quarters);
-    const typical = new Float64Array(reports.steps).fill(NaN);
-    for (let q = 0; q < reports.steps; q++) typical[q] = typicalAt(r.current, q);
-    const current = quarters(typical);
+    const day = unitDays(run, reports, k);
     const faults = run.faults.flatMap((f) =>
       (f.fault.kind === 'bypass_diode' || f.fault.kind === 'stuck') && f.fault.string === s.name
         ? [f.fault]
@@ -156,9 +167,8 @@ export function scoreWeakUnits(run: OutputRun, reports: Reports, score: OutputSc
     const alarms = new Set<number>();
     let tried = 0;
     for (const d of daysLit) {
-      const part = (c: Float64Array): Float64Array => c.subarray(d * 96, (d + 1) * 96);
-      const weak = weakUnits({ voltage: columns.map(part), current: part(current), bypassGroups });
-      score.bypassed.lookedAt += columns.length;
+      const weak = weakUnits(day(d));
+      score.bypassed.lookedAt += s.slots.length;
       const there = d >= run.onsetDay;
       if (there) tried++;
       for (const w of weak.filter((x) => x.kind === 'bypassed_substring')) {
