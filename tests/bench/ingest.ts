@@ -4,6 +4,7 @@ import path from 'node:path';
 import pg from 'pg';
 import { checkpoint, copySeconds, writeNarrowFile } from './ingest/copy';
 import { measureLive } from './ingest/live';
+import { cpuOfServer, usedBy } from './fleet/process';
 import { connectLogger } from './ingest/loggers';
 import { plantFleet } from './ingest/plant';
 import { framesMessage } from './ingest/readings';
@@ -52,9 +53,17 @@ try {
     await Promise.all(loggers.map((l, i) => l.sendAll(messages[i]!.slice(0, first), WINDOW)));
     await checkpoint(db);
     say('sending');
+    const { rows: backends } = await db.query<{ pid: number }>('select pg_backend_pid() as pid');
+    const used = () => ({
+      site: usedBy(server.pid).cpuS,
+      database: cpuOfServer(backends[0]!.pid),
+      loggers: usedBy(process.pid).cpuS,
+    });
+    const before = used();
     const start = performance.now();
     await Promise.all(loggers.map((l, i) => l.sendAll(messages[i]!.slice(first), WINDOW)));
     const seconds = (performance.now() - start) / 1000;
+    const after = used();
     copies.push(await copySeconds(db, file));
     const { rows } = await db.query<{ frames: number; judged: number; events: number; changes: number }>(
       `select (select count(*) from string_frame)::int4 as frames,
@@ -69,6 +78,8 @@ try {
     const rate = (readings * (MINUTES - first)) / MINUTES / seconds;
     figure('ingest.readings_per_s', rate, '1/s', 0);
     figure('ingest.copy_rows_per_s', copyRate, '1/s', 0);
+    for (const who of ['site', 'database', 'loggers'] as const)
+      figure(`ingest.cpu_${who}_us`, ((after[who] - before[who]) * 1e6) / (rate * seconds), 'us');
     figure('ingest.unit_events', got.changes, 'rows', 0);
     figure('ingest.events', got.events, 'rows', 0);
     figure('ingest.ratio_to_copy', rate / copyRate, 'ratio');

@@ -92,8 +92,16 @@ export function signInPool(): pg.Pool {
 }
 
 /** A session of its own, past any pooler: for LISTEN, locks and the ingest lanes. The caller ends it. */
-export async function connect(purpose: Purpose): Promise<pg.Client> {
-  const client = new pg.Client(connectionOf(purpose));
+export async function connect(
+  purpose: Purpose,
+  settings: Readonly<Record<string, string>> = {},
+): Promise<pg.Client> {
+  const connection = connectionOf(purpose);
+  const options = [
+    connection.options,
+    ...Object.entries(settings).map(([name, value]) => `-c ${name}=${value}`),
+  ];
+  const client = new pg.Client({ ...connection, options: options.join(' ') });
   client.on('error', (error) => log.warn({ error: error.message }, 'a database connection was lost'));
   await client.connect();
   return client;

@@ -129,7 +129,8 @@ export class Lane {
 
   private async write(batch: Batch): Promise<Written> {
     const nowS = Math.floor(Date.now() / 1000);
-    this.client ??= await connect('ingest');
+    // its few statements are the same all day: planned once, and not by the numbers of one batch
+    this.client ??= await connect('ingest', { plan_cache_mode: 'force_generic_plan' });
     if (nowS - this.daysAtS > DAYS_FRESH_S) {
       await this.days.refresh(this.client, nowS);
       this.daysAtS = nowS;

@@ -4,7 +4,8 @@ import { connect, database } from '../db/pools';
 import { takeBatch, type Item } from '../ingest/batch';
 import { ROLLED_UP_AFTER_S } from '../ingest/write-batch';
 import { VALUE_COLUMNS } from '../queries/frames';
-import { maskOf, sumsOf, writeFrames } from '../queries/ingest-frames';
+import { maskOf, sumsOf } from '../queries/frame-parameters';
+import { writeFrames } from '../queries/ingest-frames';
 import type { FrameRow } from '../queries/ingest-rows';
 import { NONE } from '../queries/packed-values';
 import {

@@ -1,15 +1,18 @@
 import type pg from 'pg';
 import { VALUE_COLUMNS as COLUMNS, type ValueColumn as Column } from './frames';
+import { FRAMES_AS_ROWS, NEXT_PARAMETER, frameParameters } from './frame-parameters';
 import type { FrameRow } from './ingest-rows';
 
 /**
- * The one statement that makes a batch of frames durable: frames (merged where new slots come), quarters to roll up
- * again, and the newest frame of each string. Autocommit; rows in string order, so that writers never deadlock.
+ * The one statement that makes a batch of frames durable: frames, quarters to roll up again, and the newest frame of
+ * each string. Autocommit; rows in string order, so that writers never deadlock. It comes in two forms. Nearly every
+ * frame is new, and of a string that was heard before: inserts and updates without the bookkeeping of a conflict take
+ * two thirds of the time. Where one is not, that form fails as a whole and the other merges.
  *
  * A batch holds a (string, time) once, and an incomplete frame never beside another of its string: the newest frame
  * of a string is taken from the batch by its time alone. `server/ingest/batch.ts` sees to both.
  */
-const FULL = (of: string) => `~((-1)::int8 << cardinality(${of}.state))`;
+
 /** Not every type has these: where one side is NULL the other stands. */
 const OPTIONAL = new Set<Column>(['voltage_in', 'power']);
 const either = (column: Column, a: string, b: string, both: string) =>
@@ -17,124 +20,98 @@ const either = (column: Column, a: string, b: string, both: string) =>
     ? `case when ${a} is null then ${b} when ${b} is null then ${a} else ${both} end`
     : both;
 
-const merged = (c: Column) => either(c, `f.${c}`, `excluded.${c}`, `merge_values(f.${c}, excluded.${c})`);
-const newest = (c: Column) =>
-  either(c, `l.${c}`, `excluded.${c}`, `newest_values(l.${c}, l.seen, excluded.${c}, excluded.seen)`);
+const LIST = COLUMNS.join(', ');
+const DIRTY_BEFORE = `$${NEXT_PARAMETER}::timestamptz`;
+const QUARTER = `date_bin('15 min', at, '2000-01-01Z')`;
 const voltageOf = (of: (c: Column) => string) => `frame_voltage(${of('voltage')}, ${of('voltage_in')})`;
 const powerOf = (of: (c: Column) => string) =>
   `frame_power(${(['voltage', 'voltage_in', 'current', 'power', 'state'] as const).map(of).join(', ')})`;
-const REPLACES = `excluded.at > l.at and excluded.mask = ${FULL('excluded')}`;
-const LIST = COLUMNS.join(', ');
+const merged = (c: Column) => either(c, `f.${c}`, `excluded.${c}`, `merge_values(f.${c}, excluded.${c})`);
 
-export const WRITE_FRAMES = `
-with x as materialized (
-  select to_timestamp(at) at, mask, string_id, site_id, voltage_sum, power_sum, ${COLUMNS.map((c) => `${c}::int2[] ${c}`).join(', ')}
-  from unnest($1::int4[], $2::int8[], $3::int4[], $4::int4[], $5::int4[], $6::int4[],
-    ${COLUMNS.map((_, i) => `$${i + 7}::text[]`).join(', ')})
-    x(at, mask, string_id, site_id, voltage_sum, power_sum, ${LIST})),
+const INSERT_FRAMES = `insert into string_frame as f (at, mask, string_id, voltage_sum, power_sum, ${LIST})
+  select at, mask, string_id, voltage_sum, power_sum, ${LIST} from x`;
+
+const dirty = (from: string) => `dirty as (
+  insert into rollup_dirty (quarter, string_id)
+  select distinct ${QUARTER}, string_id from ${from}
+  where at <= ${DIRTY_BEFORE} and ${QUARTER} + interval '15 min' <= ${DIRTY_BEFORE}
+  order by 1, 2 on conflict do nothing)`;
+
+/** When each slot of `of` was heard last. */
+const SEEN = `case when whole then array_fill(extract(epoch from at)::int4, array[cardinality(state)])
+    else (select array_agg(case when s is null then 0 else extract(epoch from at)::int4 end order by o)
+          from unnest(state) with ordinality u(s, o)) end`;
+const INSERT_NEWEST = `insert into string_state as l (string_id, site_id, at, mask, voltage_sum, power_sum, ${LIST}, seen)
+select string_id, site_id, at, mask, voltage_sum, power_sum, ${LIST}, ${SEEN} from x where newest`;
+
+/** What the newest state becomes where `n` comes to it, slot by slot; `whole` says that all slots of n reported. */
+function newestFrom(n: string, whole: string, seen: string): string {
+  const replaces = `${n}.at > l.at and ${whole}`;
+  const newest = (c: Column) =>
+    either(c, `l.${c}`, `${n}.${c}`, `newest_values(l.${c}, l.seen, ${n}.${c}, ${seen})`);
+  return `at = greatest(l.at, ${n}.at),
+  mask = case when ${n}.at > l.at then ${n}.mask when ${n}.at = l.at then l.mask | ${n}.mask else l.mask end,
+  voltage_sum = case when ${replaces} then ${n}.voltage_sum else ${voltageOf(newest)} end,
+  power_sum = case when ${replaces} then ${n}.power_sum else ${powerOf(newest)} end,
+  ${COLUMNS.map((c) => `${c} = case when ${replaces} then ${n}.${c} else ${newest(c)} end`).join(',\n  ')},
+  seen = case when ${replaces} then ${seen} else newest_seen(l.seen, ${seen}) end`;
+}
+const saysNews = (
+  n: string,
+  seen: string,
+) => `(${n}.at > l.at or (${n}.at = l.at and (${n}.mask & ~l.mask) <> 0)
+  or (${n}.at < l.at and exists (select from unnest(l.seen, ${seen}) u(a, b) where b > a)))`;
+
+const WRITE_NEW = `
+with ${FRAMES_AS_ROWS},
+written as (${INSERT_FRAMES}),
+${dirty('x')},
+known as (
+  update string_state l set ${newestFrom('n', 'n.whole', 'n.seen')}
+  from (select *, ${SEEN} seen from x where newest offset 0) n
+  where l.string_id = n.string_id and ${saysNews('n', 'n.seen')})
+${INSERT_NEWEST} and not exists (select from string_state s where s.string_id = x.string_id)`;
+
+const WRITE_MERGING = `
+with ${FRAMES_AS_ROWS},
 written as (
-  insert into string_frame as f (at, mask, string_id, voltage_sum, power_sum, ${LIST})
-  select at, mask, string_id, voltage_sum, power_sum, ${LIST} from x order by string_id, at
+  ${INSERT_FRAMES}
   on conflict (string_id, at) do update set mask = f.mask | excluded.mask,
     voltage_sum = ${voltageOf(merged)}, power_sum = ${powerOf(merged)},
     ${COLUMNS.map((c) => `${c} = ${merged(c)}`).join(',\n    ')}
   where (excluded.mask & ~f.mask) <> 0
   returning f.string_id, f.at),
-dirty as (
-  insert into rollup_dirty (quarter, string_id)
-  select distinct date_bin('15 min', at, '2000-01-01Z'), string_id from written
-  where date_bin('15 min', at, '2000-01-01Z') + interval '15 min' <= $15::timestamptz
-  order by 1, 2 on conflict do nothing)
-insert into string_state as l (string_id, site_id, at, mask, voltage_sum, power_sum, ${LIST}, seen)
-select distinct on (string_id) string_id, site_id, at, mask, voltage_sum, power_sum, ${LIST},
-  case when mask = ${FULL('x')} then array_fill(extract(epoch from at)::int4, array[cardinality(state)])
-    else (select array_agg(case when s is null then 0 else extract(epoch from at)::int4 end order by o)
-          from unnest(state) with ordinality u(s, o)) end
-from x order by string_id, at desc
-on conflict (string_id) do update set
-  at = greatest(l.at, excluded.at),
-  mask = case when excluded.at > l.at then excluded.mask when excluded.at = l.at then l.mask | excluded.mask else l.mask end,
-  voltage_sum = case when ${REPLACES} then excluded.voltage_sum else ${voltageOf(newest)} end,
-  power_sum = case when ${REPLACES} then excluded.power_sum else ${powerOf(newest)} end,
-  ${COLUMNS.map((c) => `${c} = case when ${REPLACES} then excluded.${c} else ${newest(c)} end`).join(',\n  ')},
-  seen = case when ${REPLACES} then excluded.seen else newest_seen(l.seen, excluded.seen) end
-where excluded.at > l.at or (excluded.at = l.at and (excluded.mask & ~l.mask) <> 0)
-  or (excluded.at < l.at and exists (select from unnest(l.seen, excluded.seen) u(a, b) where b > a))`;
+${dirty('written')}
+${INSERT_NEWEST}
+on conflict (string_id) do update set ${newestFrom('excluded', 'excluded.mask = ~((-1)::int8 << cardinality(excluded.state))', 'excluded.seen')}
+where ${saysNews('excluded', 'excluded.seen')}`;
 
-/** An array as a literal within an array: JSON differs from it by the brackets alone, and nothing writes JSON faster. */
-const literal = (values: readonly (number | null)[]): string => `"{${JSON.stringify(values).slice(1, -1)}}"`;
+const ALREADY_THERE = '23505';
+/** Where frames come twice, more of them follow: a logger sends again what it is not sure of. */
+const BATCHES_MERGED = 20;
+const merging = new WeakMap<pg.ClientBase, number>();
 
-/** Bit (position − 1) set: that unit reported. As text: 63 bits do not fit a double. */
-export function maskOf(state: readonly (number | null)[]): string {
-  let low = 0;
-  let high = 0;
-  for (let i = 0; i < state.length; i++) {
-    if (state[i] === null) continue;
-    if (i < 32) low += 2 ** i;
-    else high += 2 ** (i - 32);
-  }
-  return high < 2 ** 20 ? String(high * 2 ** 32 + low) : String(BigInt(high) * 4_294_967_296n + BigInt(low));
-}
-
-/** cV and dW over the units of a frame, as the database's frame_voltage and frame_power reckon them. */
-export function sumsOf(row: Pick<FrameRow, 'voltage' | 'voltageIn' | 'current' | 'power' | 'state'>): {
-  voltage: number;
-  power: number;
-} {
-  let voltage = 0;
-  let scaled = 0;
-  const { voltageIn, power } = row;
-  for (let i = 0; i < row.state.length; i++) {
-    const out = row.voltage[i] ?? null;
-    const into = voltageIn === null ? null : (voltageIn[i] ?? null);
-    const current = row.current[i] ?? 0;
-    voltage += out ?? into ?? 0;
-    const reported = power === null ? null : (power[i] ?? null);
-    if (reported !== null) scaled += reported * 10_000;
-    else if (out !== null) scaled += out * current;
-    else if (into !== null && row.state[i] === 1) scaled += into * current;
-  }
-  return { voltage, power: Math.round(scaled / 10_000) };
-}
-
-/** @param dirtyBefore quarters that end at or before this are rolled up already: they are made dirty */
+/**
+ * Outside a transaction: the form for new frames may fail and be followed by the other.
+ *
+ * @param dirtyBefore quarters that end at or before this are rolled up already: they are made dirty
+ */
 export async function writeFrames(
   client: pg.ClientBase,
   rows: readonly FrameRow[],
   dirtyBefore: Date,
 ): Promise<void> {
-  const at: number[] = [];
-  const mask: string[] = [];
-  const strings: number[] = [];
-  const sites: number[] = [];
-  const voltageSum: number[] = [];
-  const powerSum: number[] = [];
-  const arrays = COLUMNS.map(() => new Array<string>(rows.length));
-  rows.forEach((row, i) => {
-    const sums = sumsOf(row);
-    at.push(row.at);
-    mask.push(maskOf(row.state));
-    strings.push(row.stringId);
-    sites.push(row.siteId);
-    voltageSum.push(sums.voltage);
-    powerSum.push(sums.power);
-    const values = [
-      row.voltage,
-      row.voltageIn,
-      row.current,
-      row.power,
-      row.temperature,
-      row.signal,
-      row.via,
-      row.state,
-    ];
-    for (let k = 0; k < values.length; k++) {
-      const column = values[k];
-      arrays[k]![i] = column ? literal(column) : 'NULL';
+  const values = [...frameParameters(rows), dirtyBefore];
+  const left = merging.get(client) ?? 0;
+  if (left === 0)
+    try {
+      await client.query({ name: 'write_frames', text: WRITE_NEW, values });
+      return;
+    } catch (error) {
+      if (!(error instanceof Error && 'code' in error && error.code === ALREADY_THERE)) throw error;
     }
-  });
-  const text = [at, mask, strings, sites, voltageSum, powerSum, ...arrays].map((a) => `{${a.join(',')}}`);
-  await client.query({ name: 'write_frames', text: WRITE_FRAMES, values: [...text, dirtyBefore] });
+  merging.set(client, left === 0 ? BATCHES_MERGED : left - 1);
+  await client.query({ name: 'merge_frames', text: WRITE_MERGING, values });
 }
 
 /** Frames of days that have no partition, kept until the merge job has made one. */

@@ -1,4 +1,4 @@
-import { readFileSync } from 'node:fs';
+import { readFileSync, readdirSync } from 'node:fs';
 
 /** What a process of this machine has used, as Linux counts it. */
 export interface Used {
@@ -16,6 +16,22 @@ export function usedBy(pid: number): Used {
   const rest = readFileSync(`/proc/${pid}/stat`, 'utf8').split(') ').at(-1)?.split(' ') ?? [];
   const field = (n: number): number => Number(rest[n - 3]);
   return { cpuS: (field(14) + field(15)) / TICKS_A_S, rss: field(24) * PAGE };
+}
+
+const parentOf = (pid: number | string): number =>
+  Number(readFileSync(`/proc/${pid}/stat`, 'utf8').split(') ').at(-1)?.split(' ')[1]);
+
+/** CPU seconds of a PostgreSQL server's processes, those that live now; `backend` is the pid of any of them. */
+export function cpuOfServer(backend: number): number {
+  const postmaster = parentOf(backend);
+  let cpuS = usedBy(postmaster).cpuS;
+  for (const pid of readdirSync('/proc').filter((name) => /^\d+$/.test(name)))
+    try {
+      if (parentOf(pid) === postmaster) cpuS += usedBy(Number(pid)).cpuS;
+    } catch {
+      // it has ended meanwhile: the table of processes changes while it is read
+    }
+  return cpuS;
 }
 
 export const percentile = (values: readonly number[], share: number): number => {
