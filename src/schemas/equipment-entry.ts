@@ -2,6 +2,7 @@ import type { EquipmentFamily } from '../domain/equipment/families';
 import { FIELDS } from '../domain/equipment/plausibility';
 import { asKept, asTyped, type Entry, type EntryValue, type Field } from '../domain/equipment/fields';
 import { typedNumber } from './typed-number';
+import { typeEntry } from '../words/fields-of-types';
 
 /** What a person typed, by field key; connectors by their public identifier. */
 export type TypedEntry = Readonly<Record<string, string>>;
@@ -24,7 +25,12 @@ function readNumber(field: Extract<Field, { kind: 'number' }>, text: string): Re
   const grouped = Number(bare.replace(',', '').replace(/[−–]/, '-'));
   if (MAYBE_THOUSANDS.test(bare) && grouped >= field.min && grouped <= field.max)
     return {
-      fault: `${field.label}: "${text}" may be ${grouped} or ${Number(bare.replace(',', '.').replace(/[−–]/, '-'))}. Type ${grouped}, or the decimals with one digit more or less.`,
+      fault: typeEntry.twoMeanings(
+        field.label,
+        text,
+        grouped,
+        Number(bare.replace(',', '.').replace(/[−–]/, '-')),
+      ),
     };
   const read = typedNumber(text, field.label, {
     min: field.min,
@@ -45,14 +51,14 @@ export function readValue(field: Field, typed: string): ReadValue {
       return field.options.some((o) => o.value === text)
         ? { value: text }
         : {
-            fault: `${field.label}: choose one of ${field.options.map((o) => `"${o.label}"`).join(', ')}.`,
+            fault: typeEntry.chooseOne(field.label, field.options.map((o) => `"${o.label}"`).join(', ')),
           };
     case 'connector':
       return { value: text === '' ? null : text };
     case 'text':
-      if (text === '' && !field.optional) return { fault: `${field.label}: type it; it can’t be empty.` };
+      if (text === '' && !field.optional) return { fault: typeEntry.cannotBeEmpty(field.label) };
       return text.length > field.longest
-        ? { fault: `${field.label}: ${text.length} characters are too many. Shorten it to ${field.longest}.` }
+        ? { fault: typeEntry.tooLong(field.label, text.length, field.longest) }
         : { value: text };
   }
 }

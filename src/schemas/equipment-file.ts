@@ -3,6 +3,7 @@ import { headerOf, type Entry, type EntryValue, type Field } from '../domain/equ
 import { DEFAULTS, FIELDS } from '../domain/equipment/plausibility';
 import type { ImportFault } from './api/equipment';
 import { readValue, typedValue } from './equipment-entry';
+import { typeFile } from '../words/fields-of-types';
 
 /** A table of types as a file has it: which column is which field, and what each cell says. */
 
@@ -38,17 +39,17 @@ export function readHeader(family: EquipmentFamily, header: readonly string[]): 
       faults.push({
         column: title,
         typed: title,
-        why: 'Two columns are the same field.',
+        why: typeFile.sameFieldTwice,
         remedy: 'Delete one.',
       });
     else if (field?.kind === 'number' && unit !== null && !sameUnit(unit, field.unit))
       faults.push({
         column: title,
         typed: title,
-        why: `The column is in ${unit || 'no unit'}.`,
+        why: typeFile.columnUnit(unit),
         remedy: field.unit
-          ? `This field takes ${field.unit}: convert the column, and call it "${headerOf(field)}".`
-          : `This field has no unit: call the column "${headerOf(field)}".`,
+          ? typeFile.convertColumn(field.unit, headerOf(field))
+          : typeFile.fieldHasNoUnit(headerOf(field)),
       });
     if (!field && title.trim() !== '' && !OURS_ALONE.has(name)) ignored.push(title.trim());
     fields.push(field ?? null);
@@ -57,8 +58,8 @@ export function readHeader(family: EquipmentFamily, header: readonly string[]): 
     faults.push({
       column: 'Name',
       typed: '',
-      why: 'No column is called "Name".',
-      remedy: 'Put the names of the columns into the first row; a download of the list shows them.',
+      why: typeFile.noName,
+      remedy: typeFile.nameColumns,
     });
   return { fields, faults, ignored };
 }
@@ -70,7 +71,7 @@ function inTwo(label: string, fault: string): { why: string; remedy: string } {
   const capital = (text: string) => text.charAt(0).toLocaleUpperCase('en') + text.slice(1);
   return cut?.[1]
     ? { why: capital(cut[1]), remedy: bare.slice(cut[0].length) }
-    : { why: 'It can’t be read as it is.', remedy: capital(bare) };
+    : { why: typeFile.unreadable, remedy: capital(bare) };
 }
 
 export interface ReadRow {
@@ -102,8 +103,8 @@ export function readRow(
         faults.push({
           column: field.label,
           typed: '',
-          why: 'The file has no such column.',
-          remedy: `Add a column "${headerOf(field)}".`,
+          why: typeFile.noSuchColumn,
+          remedy: typeFile.addColumn(headerOf(field)),
         });
       continue;
     }
@@ -113,25 +114,18 @@ export function readRow(
     if (field.kind === 'connector' && typed !== '') {
       const ref = around.connectorByName.get(typed.toLocaleLowerCase('en'));
       if (ref) entry[field.key] = ref;
-      else
-        fault(
-          `No connector type is called "${typed}".`,
-          'Enter the connector type first, or correct the name.',
-        );
+      else fault(typeFile.noConnectorType(typed), typeFile.enterConnectorType);
       continue;
     }
     if (typed === '' && field.kind === 'number' && !field.emptyMeans) {
       fault(
-        'The cell is empty.',
-        `Type a number from ${field.min} to ${field.max}${field.unit ? ` ${field.unit}` : ''}.`.replaceAll(
-          '-',
-          '−',
-        ),
+        typeFile.emptyCell,
+        typeFile.typeNumber(field.min, field.max, field.unit ? ` ${field.unit}` : '').replaceAll('-', '−'),
       );
       continue;
     }
     if (typed === '' && field.kind === 'text' && !field.optional) {
-      fault('The cell is empty.', 'Fill it in: every type needs one.');
+      fault(typeFile.emptyCell, typeFile.fillIn);
       continue;
     }
     const choice =
@@ -140,8 +134,8 @@ export function readRow(
         : undefined;
     if (field.kind === 'choice' && choice === undefined) {
       fault(
-        typed === '' ? 'The cell is empty.' : `"${typed}" is none of the words of this column.`,
-        `Write one of: ${field.options.map((o) => o.label).join('; ')}.`,
+        typed === '' ? typeFile.emptyCell : typeFile.noSuchWord(typed),
+        typeFile.writeOneOf(field.options.map((o) => o.label).join('; ')),
       );
       continue;
     }

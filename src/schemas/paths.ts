@@ -92,6 +92,7 @@ export const paths = {
     fleetCsv: () => '/api/fleet.csv',
     site: (site: string) => `/api/sites/${site}`,
     siteEvents: (site: string) => `/api/sites/${site}/events`,
+    siteEventsCsv: (site: string) => `/api/sites/${site}/events.csv`,
     acknowledge: (site: string) => `/api/sites/${site}/acknowledge`,
     causesCsv: () => '/api/causes.csv',
     plannedWorks: (site: string) => `/api/sites/${site}/planned-works`,
@@ -234,6 +235,8 @@ export const paths = {
     loggerTokenEnd: (site: string, logger: string, token: string) =>
       `/api/sites/${site}/loggers/${logger}/tokens/${token}/end`,
     historyImports: (site: string) => `/api/sites/${site}/history-imports`,
+    historyImportsCsv: (site: string) => `/api/sites/${site}/history-imports.csv`,
+    loggersCsv: (site: string) => `/api/sites/${site}/loggers.csv`,
     historyImportUndo: (site: string, made: string) => `/api/sites/${site}/history-imports/${made}/undo`,
   },
   live: () => '/live',

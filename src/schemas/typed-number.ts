@@ -1,3 +1,4 @@
+import { typedNumbers } from '../words/fields-of-types';
 /** Numbers as people type them. */
 
 export type TypedNumber = { value: number; fault: null } | { value: null; fault: string };
@@ -23,19 +24,13 @@ export function typedNumber(text: string, name: string, range: NumberRange): Typ
     .replace(/^\+(?=[\d.,])/, '');
   const plain = unit && bare.toLowerCase().endsWith(unit.toLowerCase()) ? bare.slice(0, -unit.length) : bare;
   const refuse = (fault: string): TypedNumber => ({ value: null, fault });
-  if (plain === '') return refuse(`${name}: type a number ${span}.`);
-  if (/[.,].*[.,]/.test(plain))
-    return refuse(
-      `${name}: "${text.trim()}" has two marks. Type it with one comma or point, before the decimals.`,
-    );
+  if (plain === '') return refuse(typedNumbers.typeNumber(name, span));
+  if (/[.,].*[.,]/.test(plain)) return refuse(typedNumbers.twoMarks(name, text.trim()));
   const point = plain.replace(',', '.');
-  if (!/^-?(\d+\.?\d*|\.\d+)$/.test(point))
-    return refuse(`${name}: "${text.trim()}" is no number. Type a number ${span}.`);
+  if (!/^-?(\d+\.?\d*|\.\d+)$/.test(point)) return refuse(typedNumbers.noNumber(name, text.trim(), span));
   const value = Number(point) + 0;
-  if (whole && !Number.isInteger(value))
-    return refuse(`${name}: ${written(value)} is no whole number. Type one ${span}.`);
-  if (!(value >= min && value <= max))
-    return refuse(`${name}: ${written(value)} is outside what is possible. Type a number ${span}.`);
+  if (whole && !Number.isInteger(value)) return refuse(typedNumbers.notWhole(name, written(value), span));
+  if (!(value >= min && value <= max)) return refuse(typedNumbers.outside(name, written(value), span));
   return { value, fault: null };
 }
 

@@ -21,6 +21,7 @@ import { answerProbe } from './observe/probes';
 import { currentRequest, inRequest, requestIdOf, type CurrentRequest } from './request';
 import { refuseUpgrade, routeUpgrade, startRoles, stopRoles } from './roles';
 import { certificateFiles, secureServer } from './tls';
+import { requestRefusals } from '../words/refusals';
 
 type Handler = (
   req: IncomingMessage,
@@ -66,22 +67,17 @@ function answer(req: IncomingMessage, res: ServerResponse, status: number, messa
 function refuseEarly(req: IncomingMessage, res: ServerResponse): boolean {
   const { host } = req.headers;
   if (!req.url?.startsWith('/') || !host || !URL.canParse(req.url, `http://${host}`)) {
-    answer(req, res, 400, 'The address is not readable.');
+    answer(req, res, 400, requestRefusals.addressUnreadable);
     return true;
   }
   try {
     decodeURI(req.url);
   } catch {
-    answer(req, res, 400, 'The address has a % that encodes nothing.');
+    answer(req, res, 400, requestRefusals.badEscape);
     return true;
   }
   if (Number(req.headers['content-length'] ?? 0) > REQUEST_MAX_BYTES) {
-    answer(
-      req,
-      res,
-      ERROR_KINDS.too_large.status,
-      `A body may have at most ${REQUEST_MAX_BYTES} bytes. Send less at once.`,
-    );
+    answer(req, res, ERROR_KINDS.too_large.status, requestRefusals.tooLarge(REQUEST_MAX_BYTES));
     return true;
   }
   return false;
@@ -144,7 +140,7 @@ async function startServer(handler: Handler, options: StartOptions): Promise<Run
     if (!settings.TRUST_PROXY) dropForwarded(req); // Astro believes them from anybody
     if (refuseEarly(req, res)) return;
     const forLoggers = takesReadings && req.url?.startsWith(paths.api.v1Ingest());
-    if (!isWeb && !forLoggers) return answer(req, res, 404, 'This process serves no pages.');
+    if (!isWeb && !forLoggers) return answer(req, res, 404, requestRefusals.noPagesHere);
     assets(req, res, () => void handler(req, res, undefined, { drained: drainedOf(res) })); // without `next`: unknown paths get the 404 page
   };
   const listener: RequestListener = (req, res) => {

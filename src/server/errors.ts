@@ -1,15 +1,16 @@
+import { errorTitles } from '../words/refusals';
 /** What can go wrong in a use case, and the one table of what each kind means outside. */
 
 export const ERROR_KINDS = {
-  invalid: { status: 422, close: 4422, title: 'Something in the request is wrong' },
-  unauthenticated: { status: 401, close: 4401, title: 'Sign in first' },
-  forbidden: { status: 403, close: 4403, title: 'Your role does not include this' },
-  not_found: { status: 404, close: 4404, title: 'Nothing is here' },
-  not_allowed: { status: 405, close: 4405, title: 'This address does not take that' },
-  conflict: { status: 409, close: 4409, title: 'This clashes with what is there' },
-  too_large: { status: 413, close: 1009, title: 'Too large' },
-  too_many: { status: 429, close: 4429, title: 'Too many tries' },
-  unavailable: { status: 503, close: 1013, title: 'Not reachable just now' },
+  invalid: { status: 422, close: 4422, title: errorTitles.invalid },
+  unauthenticated: { status: 401, close: 4401, title: errorTitles.unauthenticated },
+  forbidden: { status: 403, close: 4403, title: errorTitles.forbidden },
+  not_found: { status: 404, close: 4404, title: errorTitles.notFound },
+  not_allowed: { status: 405, close: 4405, title: errorTitles.notAllowed },
+  conflict: { status: 409, close: 4409, title: errorTitles.conflict },
+  too_large: { status: 413, close: 1009, title: errorTitles.tooLarge },
+  too_many: { status: 429, close: 4429, title: errorTitles.tooMany },
+  unavailable: { status: 503, close: 1013, title: errorTitles.unavailable },
 } as const;
 export type ErrorKind = keyof typeof ERROR_KINDS;
 
@@ -77,6 +78,6 @@ export function isDatabaseAway(error: unknown): boolean {
 /** What a query found, or `not_found`: the same answer for what is not there and for what is somebody else's. */
 export function found<T>(value: T | null | undefined, what: string): T {
   if (value === undefined || value === null)
-    throw new AppError('not_found', { message: `No such ${what}. Check the link, or go back to the fleet.` });
+    throw new AppError('not_found', { message: errorTitles.noSuch(what) });
   return value;
 }

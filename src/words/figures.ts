@@ -1,4 +1,5 @@
 import { counted, energy, number, percent, quantity } from '../drawings/numbers';
+import { longDate } from '../drawings/times';
 
 export const fleetFiguresPage = {
   specificYield: 'Specific yield',
@@ -61,7 +62,7 @@ export const pricesSheet = {
   aManagerSetsThe:
     'A manager sets the currency in the settings; prices are kept until then and shown afterwards.',
   noneIsSetSo: 'None is set, so energy is not priced.',
-  fromWords: (from: string) => `From ${from}: `,
+  fromWords: (from: string) => `From ${longDate(from, 'UTC')}: `,
   setBy: (currency: null | string, by: string) => ` ${currency ?? ''}, set by ${by}`,
   takeAway: 'Take away',
   takeAwayThePrice: (from: string) => `Take away the price from ${from}`,

@@ -1,6 +1,6 @@
 import { expect, it } from 'vitest';
-import type { JobKindLine } from '../schemas/api/jobs';
-import { isLate } from './jobs-sentences';
+import type { JobKindLine, JobsPage } from '../schemas/api/jobs';
+import { isLate, jobsFinding } from './jobs-sentences';
 
 const kind = (due: string | null): JobKindLine => ({
   task: 'pack_days',
@@ -21,4 +21,27 @@ it('a job is late by its own clock: one of every night is not late by day, one o
   expect(isLate(kind('2026-12-01T17:56:00.000Z'), '2026-12-01T18:00:00.000Z')).toBe(false);
   expect(isLate(kind('2026-12-01T17:49:00.000Z'), '2026-12-01T18:00:00.000Z')).toBe(true);
   expect(isLate(kind(null), '2026-12-01T18:00:00.000Z')).toBe(false);
+});
+
+it('what was given up is not said to be tried again', () => {
+  const page = (nextAt: string | null): JobsPage => ({
+    at: '2026-12-01T18:00:00.000Z',
+    kinds: [],
+    failures: [],
+    noQueue: false,
+    failing: [
+      {
+        id: '1',
+        task: 'output_night',
+        title: 'Judge a day',
+        siteName: 'Mill',
+        error: 'It met something.',
+        attempts: 25,
+        attemptsMax: 25,
+        nextAt,
+      },
+    ],
+  });
+  expect(jobsFinding(page(null)).finding).toBe('One job was given up');
+  expect(jobsFinding(page('2026-12-01T19:00:00.000Z')).finding).toContain('is tried again');
 });

@@ -17,6 +17,13 @@ export function jobsFinding(page: JobsPage): { finding: string; sentence: string
     };
   const { failing } = page;
   const late = page.kinds.filter((k) => isLate(k, page.at));
+  const givenUp = failing.filter((f) => f.nextAt === null).length;
+  if (givenUp > 0)
+    return {
+      finding: `${countAtStart(givenUp)} ${givenUp === 1 ? 'job was' : 'jobs were'} given up`,
+      sentence:
+        'It failed as often as it may be tried. See below why, put that right, then let it be tried again: what it had done halfway is not done twice.',
+    };
   if (failing.length > 0)
     return {
       finding: `${countAtStart(failing.length)} ${failing.length === 1 ? 'job has' : 'jobs have'} failed and ${failing.length === 1 ? 'is' : 'are'} tried again`,

@@ -106,7 +106,7 @@ export const developersPageWords = {
 export const auditPageWords = {
   whoDidWhat: 'Who did what',
   everyChangeOfPeople:
-    'Every change of people, access, as-built, equipment, tests and handovers, with what stood before. Entries are only ever added.',
+    'Every change of people, access, as-built, equipment, tests, cases and settings, with what stood before. Entries are only ever added.',
 };
 
 export const captureSitePage = {

@@ -108,7 +108,7 @@ export const TABLE: readonly Row[] = [
     packages: [],
     subfolders: [],
   },
-  { folder: 'src/schemas', may: ['src/domain'], packages: ['zod'], subfolders: ['api'] },
+  { folder: 'src/schemas', may: ['src/words', 'src/domain'], packages: ['zod'], subfolders: ['api'] },
   { folder: 'src/lib', may: ['src/words', 'src/schemas', 'src/domain'], packages: 'browser', subfolders: [] },
   { folder: 'src/drawings', may: ['src/words', 'src/domain'], packages: ['react'], subfolders: [] },
   {

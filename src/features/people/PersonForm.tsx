@@ -77,14 +77,14 @@ export function PersonForm({ draft, sites, fixedEmail, fixedRole, fault, busy, s
       <fieldset disabled={fixedRole}>
         <legend className="mb-1 font-medium">{personForm.role}</legend>
         {ROLES.map((role) => (
-          <label key={role} className="target flex items-center gap-2.5">
+          <label key={role} className="target flex items-center gap-2.5 py-1">
             <input
               type="radio"
               name="role"
               value={role}
               checked={typed.role === role}
               onChange={() => change({ role })}
-              className="h-5 w-5 accent-[var(--petrol)]"
+              className="h-5 w-5 shrink-0 accent-[var(--petrol)]"
             />
             {ROLE_WORDS[role]}
           </label>

@@ -1,8 +1,9 @@
 import { z } from 'zod';
+import { accountFields } from '../../words/fields';
 
 export const signInBody = z.strictObject({
-  email: z.string().trim().min(3, 'Give your e-mail address').max(254),
-  password: z.string().min(1, 'Give your password').max(200),
+  email: z.string().trim().min(3, accountFields.giveEmail).max(254),
+  password: z.string().min(1, accountFields.givePassword).max(200),
   keep: z
     .union([z.boolean(), z.literal('on')])
     .optional()

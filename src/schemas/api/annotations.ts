@@ -1,9 +1,10 @@
 import { z } from 'zod';
 import { id } from './now';
+import { annotationFields } from '../../words/fields';
 
 /** Notes on the time axis: an instant or a span, of a site or of one string of it. */
 
-const time = z.iso.datetime({ offset: true, message: 'Give a time as 2026-11-03T10:43Z' });
+const time = z.iso.datetime({ offset: true, message: annotationFields.giveTime });
 
 export const annotationParams = z.strictObject({ site: id, annotation: id });
 export const annotationsQuery = z.strictObject({
@@ -22,15 +23,11 @@ export const newAnnotation = z
     string: id.nullable(),
     from: time,
     to: time.nullable(),
-    text: z
-      .string()
-      .trim()
-      .min(1, 'Write what the note says.')
-      .max(2000, 'A note has up to 2,000 characters.'),
+    text: z.string().trim().min(1, annotationFields.writeNote).max(2000, annotationFields.noteTooLong),
   })
   .refine((n) => n.to === null || Date.parse(n.to) > Date.parse(n.from), {
     path: ['to'],
-    message: 'The end must lie after the beginning. Leave it empty for a note at one moment.',
+    message: annotationFields.endBeforeBeginning,
   });
 export type NewAnnotation = z.infer<typeof newAnnotation>;
 

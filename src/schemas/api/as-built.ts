@@ -2,6 +2,7 @@ import { z } from 'zod';
 import { PART_KINDS } from '../../domain/commissioning/as-built/parts';
 import { UNIT_KINDS } from '../../domain/equipment/unit-type';
 import { id } from './now';
+import { asBuiltFields } from '../../words/fields';
 
 /** The as-built of a site: its parts as they stand, edits of them, and units in slots. Times ISO 8601 in UTC. */
 
@@ -107,7 +108,7 @@ export const asBuilt = z.object({
 });
 export type AsBuilt = z.infer<typeof asBuilt>;
 
-const reason = z.string().trim().max(500, '500 characters at most').default('');
+const reason = z.string().trim().max(500, asBuiltFields.reasonTooLong).default('');
 
 export const siteCreate = z.strictObject({ values: partValues });
 export const siteCreated = z.object({ id });
@@ -117,7 +118,7 @@ export const partAdd = z.strictObject({
   kind: z.enum(PART_KINDS).exclude(['site']),
   values: partValues,
   /** Strings only: so many alike, their names counted up. */
-  alike: z.int().min(1, 'at least one').max(50, '50 at once at most').default(1),
+  alike: z.int().min(1, asBuiltFields.oneAtLeast).max(50, asBuiltFields.tooManyAtOnce).default(1),
   /** Of strings alike each is on the next input, the first on the one chosen; false: all on that one. */
   inTurn: z.boolean().default(false),
   reason,
@@ -164,7 +165,7 @@ export const placementsBody = z.strictObject({
         string: id,
         position: z.int().min(1).max(63),
         moduleType: id.optional(),
-        roofPlace: z.string().trim().max(200, '200 characters at most').optional(),
+        roofPlace: z.string().trim().max(200, asBuiltFields.placeTooLong).optional(),
       }),
     )
     .max(20_000)

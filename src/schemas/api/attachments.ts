@@ -1,5 +1,6 @@
 import { z } from 'zod';
 import { id } from './now';
+import { attachmentFields } from '../../words/fields';
 
 /** Photos and documents. The bytes are the body of the request, what they are is its query. */
 
@@ -22,9 +23,9 @@ export const attachmentQuery = z.strictObject({
   subject: z.enum(ATTACHMENT_SUBJECTS),
   subjectRef: id.optional(), // may arrive before its subject
   string: id.optional(),
-  name: z.string().trim().min(1, 'Give the file a name').max(200, 'At most 200 characters'),
-  note: z.string().trim().max(2000, 'At most 2000 characters').default(''),
-  at: z.iso.datetime('Give a time in UTC, as 2026-11-03T10:15:00Z'),
+  name: z.string().trim().min(1, attachmentFields.nameFile).max(200, attachmentFields.nameTooLong),
+  note: z.string().trim().max(2000, attachmentFields.noteTooLong).default(''),
+  at: z.iso.datetime(attachmentFields.giveTimeUtc),
   /** `yes`: what the camera wrote about place and time stays in the picture. */
   keepPlace: z.enum(['yes', 'no']).default('no'),
 });

@@ -10,11 +10,12 @@ import {
 import type { CaseFigures } from '../../domain/cases/figures';
 import { id } from './now';
 import { CASE_SORTS, TITLE_MAX, WHAT_MAX, COMMENT_MAX } from '../lists-and-limits';
+import { caseFields } from '../../words/fields';
 
 /** Cases that people work on. Times ISO 8601 in UTC, days as 2026-11-03 at the site. */
 
 const time = z.iso.datetime();
-const day = z.iso.date('Give a day as 2026-11-03.');
+const day = z.iso.date(caseFields.giveDay);
 const person = z.object({ id, name: z.string() });
 
 /** One line of the checklist as done. */
@@ -136,19 +137,19 @@ export interface CasePage {
 }
 
 const clean = (text: string) => !/[^\P{C}\n\r\t]/u.test(text);
-const CONTROL = 'Leave control characters out.';
+const CONTROL = caseFields.noControlCharacters;
 const title = z
-  .string({ error: 'Give a title.' })
+  .string({ error: caseFields.giveTitle })
   .trim()
-  .min(1, 'Give a title.')
-  .max(TITLE_MAX, `Use at most ${TITLE_MAX} characters.`)
+  .min(1, caseFields.giveTitle)
+  .max(TITLE_MAX, caseFields.titleTooLong(TITLE_MAX))
   .refine((t) => !/\p{C}/u.test(t), CONTROL);
-const what = z.string().trim().max(WHAT_MAX, `Use at most ${WHAT_MAX} characters.`).refine(clean, CONTROL);
-const kind = z.enum(CASE_KINDS, { error: 'Choose what is wrong.' });
+const what = z.string().trim().max(WHAT_MAX, caseFields.whatTooLong(WHAT_MAX)).refine(clean, CONTROL);
+const kind = z.enum(CASE_KINDS, { error: caseFields.chooseKind });
 const part = z.strictObject({ string: id, position: z.int().min(1).max(63).nullable() });
-const parts = z.array(part).max(400, 'At most 400 units.');
-const strings = z.array(id).max(400, 'At most 400 strings.');
-const note = z.string().trim().max(2000, 'Use at most 2000 characters.').refine(clean, CONTROL);
+const parts = z.array(part).max(400, caseFields.tooManyUnits);
+const strings = z.array(id).max(400, caseFields.tooManyStrings);
+const note = z.string().trim().max(2000, caseFields.noteTooLong).refine(clean, CONTROL);
 
 export const newCaseView = z.object({
   cause: id.optional().catch(undefined),
@@ -193,7 +194,7 @@ export type NewCaseBody = z.infer<typeof newCase>;
 
 export const caseReport = z.strictObject({
   ref: id,
-  what: what.min(3, 'Say in a few words what looks wrong.'),
+  what: what.min(3, caseFields.sayWhatLooksWrong),
 });
 export type CaseReport = z.infer<typeof caseReport>;
 
@@ -242,17 +243,17 @@ export const caseComment = z.strictObject({
   body: z
     .string()
     .trim()
-    .min(1, 'Write something first.')
-    .max(COMMENT_MAX, `Use at most ${COMMENT_MAX} characters.`)
+    .min(1, caseFields.writeSomething)
+    .max(COMMENT_MAX, caseFields.commentTooLong(COMMENT_MAX))
     .refine(clean, CONTROL),
-  mentions: z.array(id).max(40, 'At most 40 people.').default([]),
+  mentions: z.array(id).max(40, caseFields.tooManyPeople).default([]),
 });
 export type CaseCommentBody = z.infer<typeof caseComment>;
 
 export const casePhotoQuery = z.strictObject({
   ref: id,
-  name: z.string().trim().min(1, 'Give the file a name').max(200, 'At most 200 characters'),
-  note: z.string().trim().max(2000, 'At most 2000 characters').default(''),
+  name: z.string().trim().min(1, caseFields.nameFile).max(200, caseFields.fileNameTooLong),
+  note: z.string().trim().max(2000, caseFields.fileNoteTooLong).default(''),
   at: time,
 });
 

@@ -1,15 +1,16 @@
 import { z } from 'zod';
 import { CHECK_KEYS, CHECK_RESULTS } from '../../domain/commissioning/checks/definition';
 import { id } from './now';
+import { checkFields } from '../../words/fields';
 
 /** Install checks: what a person says of one thing at one string. Times ISO 8601 in UTC. */
 
-const time = z.iso.datetime('Give a time in UTC, as 2026-11-03T10:15:00Z');
+const time = z.iso.datetime(checkFields.giveTimeUtc);
 
 /** Numbers as measured, words chosen, public identifiers of connector types; keys in domain/commissioning/checks. */
 export const figures = z
   .record(z.string().max(40), z.union([z.number(), z.string().max(80)]))
-  .refine((f) => Object.keys(f).length <= 20, 'At most 20 figures');
+  .refine((f) => Object.keys(f).length <= 20, checkFields.tooManyFigures);
 
 /** `ref` is made where it is recorded: sent twice is stored once. `supersedes`: the newest record that the person saw. */
 export const checkInput = z.strictObject({
@@ -17,8 +18,8 @@ export const checkInput = z.strictObject({
   stringId: id,
   check: z.enum(CHECK_KEYS),
   result: z.enum(CHECK_RESULTS),
-  reason: z.string().trim().max(500, 'At most 500 characters').default(''),
-  note: z.string().trim().max(2000, 'At most 2000 characters').default(''),
+  reason: z.string().trim().max(500, checkFields.remarkTooLong).default(''),
+  note: z.string().trim().max(2000, checkFields.noteTooLong).default(''),
   figures: figures.default({}),
   at: time, // by the clock of who recorded it
   supersedes: id.nullable().default(null),
@@ -43,7 +44,7 @@ export type CheckRecord = z.infer<typeof checkRecord>;
 /** Signs the checks of a string as they stood when the person looked: `fingerprint` is theirs. */
 export const signOffInput = z.strictObject({
   ref: id,
-  fingerprint: z.string().regex(/^[0-9a-f]{64}$/, 'A fingerprint has 64 hexadecimal digits'),
+  fingerprint: z.string().regex(/^[0-9a-f]{64}$/, checkFields.fingerprintLength),
 });
 export type SignOffInput = z.infer<typeof signOffInput>;
 

@@ -1,6 +1,7 @@
 import { z } from 'zod';
 import { STEPS } from '../../domain/commissioning/steps';
 import { id } from './now';
+import { commissioningFields } from '../../words/fields';
 
 /** Sites under way, step by step. Times ISO 8601 in UTC. */
 
@@ -43,7 +44,7 @@ export const acceptGap = z.strictObject({
   reason: z
     .string()
     .trim()
-    .min(3, 'Say why this may stand open; it goes into the pack.')
-    .max(2000, 'Use at most 2,000 characters.'),
+    .min(3, commissioningFields.sayWhyOpen)
+    .max(2000, commissioningFields.reasonTooLong),
 });
 export type AcceptGap = z.infer<typeof acceptGap>;

@@ -1,6 +1,7 @@
 import { z } from 'zod';
 import { EQUIPMENT_FAMILIES } from '../../domain/equipment/families';
 import { id } from './now';
+import { equipmentFields } from '../../words/fields';
 
 const time = z.iso.datetime();
 
@@ -11,7 +12,7 @@ export const pairParams = z.object({ pair: id });
 /** A document that a pair rests on: its bytes are the body. */
 export const evidenceQuery = z.strictObject({
   ref: id, // made by the browser: sent again after a broken upload is stored once
-  name: z.string().trim().min(1, 'Give the file a name.').max(200, 'At most 200 characters.'),
+  name: z.string().trim().min(1, equipmentFields.nameFile).max(200, equipmentFields.nameTooLong),
 });
 
 export const ARCHIVED_SHOWS = ['in_use', 'all', 'archived'] as const;
@@ -102,10 +103,7 @@ export type EntrySaved = z.infer<typeof entrySaved>;
 export const archiveInput = z.strictObject({ archived: z.boolean() });
 
 export const importInput = z.strictObject({
-  text: z
-    .string()
-    .min(1, 'Choose a file or paste rows first.')
-    .max(220_000, 'Import at most 200 kB at once.'),
+  text: z.string().min(1, equipmentFields.chooseFile).max(220_000, equipmentFields.fileTooLarge),
   /** Given: import what the preview with this fingerprint showed. */
   confirm: z.string().max(80).optional(),
 });
@@ -146,9 +144,9 @@ export type ImportPreview = z.infer<typeof importPreview>;
 export const pairInput = z.strictObject({
   first: id,
   second: id,
-  document: z.string().trim().min(3, 'Name the document.').max(300),
-  edition: z.string().trim().min(1, 'Say which edition or date.').max(80),
-  page: z.string().trim().min(1, 'Say on which page or in which table.').max(80),
+  document: z.string().trim().min(3, equipmentFields.nameDocument).max(300),
+  edition: z.string().trim().min(1, equipmentFields.sayEdition).max(80),
+  page: z.string().trim().min(1, equipmentFields.sayPage).max(80),
   note: z.string().trim().max(1000).default(''),
 });
 export type PairInput = z.infer<typeof pairInput>;

@@ -4,6 +4,7 @@ import { periodOf, type Period } from '../../domain/output/period';
 import { id } from './now';
 import { typedNumber } from '../typed-number';
 import { fleetFiguresSorts } from '../lists-and-limits';
+import { figureFields } from '../../words/fields';
 
 /** What figures are asked for, as it stands in the address: a month, a year, or (unreadable, absent) the present one. */
 export const figuresView = z.object({
@@ -17,13 +18,13 @@ export const figuresView = z.object({
 export const figuresQuery = z.strictObject({
   period: z
     .string()
-    .refine((key) => periodOf(key) !== null, 'A month like 2026-11, or a year like 2026.')
+    .refine((key) => periodOf(key) !== null, figureFields.monthOrYear)
     .optional(),
 });
 export const monthQuery = z.strictObject({
   month: z
     .string()
-    .refine((key) => periodOf(key)?.kind === 'month', 'A month like 2026-11.')
+    .refine((key) => periodOf(key)?.kind === 'month', figureFields.month)
     .optional(),
 });
 
@@ -116,10 +117,10 @@ export type FleetFiguresView = z.infer<typeof fleetFiguresView>;
 
 export const tariffParams = z.object({ site: id, tariff: id });
 export const newTariff = z.strictObject({
-  from: z.iso.date('A day like 2026-04-01.'),
+  from: z.iso.date(figureFields.day),
   /** As typed, or a number. */
   priceKWh: z.union([z.number(), z.string().max(40)]).transform((value, context) => {
-    const { value: price, fault } = typedNumber(String(value), 'Price a kWh', { min: 0, max: 1000 });
+    const { value: price, fault } = typedNumber(String(value), figureFields.price, { min: 0, max: 1000 });
     if (price !== null) return Math.round(price * 1e6) / 1e6;
     context.addIssue(fault);
     return z.NEVER;

@@ -1,6 +1,7 @@
 import { z } from 'zod';
 import { siteSteps } from './commissioning';
 import { id } from './now';
+import { handoverFields } from '../../words/fields';
 
 /** Handover packs of a site. Times ISO 8601 in UTC. */
 
@@ -26,7 +27,7 @@ export const handoverPage = z.object({
 export type HandoverPage = z.infer<typeof handoverPage>;
 
 export const makeHandover = z.strictObject({
-  remark: z.string().trim().max(2000, 'Use at most 2,000 characters.').default(''),
+  remark: z.string().trim().max(2000, handoverFields.remarkTooLong).default(''),
   tellCustomers: z.boolean().default(false),
 });
 export type MakeHandover = z.infer<typeof makeHandover>;

@@ -2,6 +2,7 @@ import { z } from 'zod';
 import { PLACE_COLUMNS, QUANTITIES, UNITS, type KnownSubjects } from '../../domain/history-import/layout';
 import type { HistoryFault } from '../../domain/history-import/read';
 import { id } from './now';
+import { historyFields } from '../../words/fields';
 
 /** Readings of the time before Wakeline, from a file. */
 
@@ -24,11 +25,11 @@ const columnUse = z.union([
   z.strictObject({ as: z.enum(PLACE_COLUMNS) }),
   z.strictObject({
     as: z.enum(QUANTITIES),
-    unit: z.string().refine((u) => unitNames.has(u), 'is no unit that is known here'),
+    unit: z.string().refine((u) => unitNames.has(u), historyFields.unknownUnit),
     of: subject.nullable(),
   }),
 ]);
-const zone = z.string().max(64).refine(isZone, 'is no time zone that this server knows');
+const zone = z.string().max(64).refine(isZone, historyFields.unknownZone);
 
 export const historyLayout = z.strictObject({
   columns: z.array(columnUse).min(1).max(COLUMNS_MAX),
@@ -52,7 +53,7 @@ export const historyOrder = z.strictObject({
   fileName: z.string().trim().min(1).max(200),
   separator: z.enum(['\t', ';', ',', '|']),
   layout: historyLayout,
-  note: z.string().trim().max(500, '500 characters at most').default(''),
+  note: z.string().trim().max(500, historyFields.noteTooLong).default(''),
   /** What the person looked at: where the server reads otherwise nothing is kept. */
   seen: z.strictObject({ rows: z.int(), readings: z.int(), leftOut: z.int() }),
 });

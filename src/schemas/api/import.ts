@@ -3,6 +3,7 @@ import { IMPORT_COLUMNS, REQUIRED_COLUMNS } from '../../domain/commissioning/imp
 import type { Change } from '../../domain/commissioning/import/plan';
 import { NAME_COLUMNS, type CellFault, type KnownNames } from '../../domain/commissioning/import/table';
 import { type ImportStep } from '../lists-and-limits';
+import { importFields } from '../../words/fields';
 
 /** Rows and cells of one import. */
 export const IMPORT_ROWS_MAX = 20_000;
@@ -18,16 +19,16 @@ export const importTable = z
   .object({
     columns: z.array(z.enum(IMPORT_COLUMNS)).max(IMPORT_COLUMNS.length),
     lines: z.array(z.int().min(1)).max(IMPORT_ROWS_MAX),
-    rows: z.array(cells).min(1, 'there is no row to import').max(IMPORT_ROWS_MAX),
+    rows: z.array(cells).min(1, importFields.noRow).max(IMPORT_ROWS_MAX),
   })
-  .refine((t) => t.lines.length === t.rows.length, { path: ['lines'], message: 'one line number a row' })
+  .refine((t) => t.lines.length === t.rows.length, { path: ['lines'], message: importFields.oneLineARow })
   .refine((t) => new Set(t.columns).size === t.columns.length, {
     path: ['columns'],
-    message: 'a column comes twice',
+    message: importFields.columnTwice,
   })
   .refine((t) => REQUIRED_COLUMNS.every((c) => t.columns.includes(c)), {
     path: ['columns'],
-    message: `the columns ${REQUIRED_COLUMNS.join(', ')} are needed`,
+    message: importFields.columnsNeeded(REQUIRED_COLUMNS.join(', ')),
   });
 
 export const importChoices = z.object({
@@ -61,11 +62,11 @@ export const importBody = z
   })
   .refine((b) => b.mode === 'check' || b.reason.length >= 3, {
     path: ['reason'],
-    message: 'say why, in a few words: it stays in the history',
+    message: importFields.sayWhy,
   })
   .refine((b) => b.mode === 'check' || b.seen !== null, {
     path: ['seen'],
-    message: 'check the file first, and look at what would change',
+    message: importFields.checkFirst,
   });
 export type ImportBody = z.input<typeof importBody>;
 export type ImportOrder = z.infer<typeof importBody>;

@@ -1,5 +1,6 @@
 import { z } from 'zod';
 import { id } from './now';
+import { isolationFields } from '../../words/fields';
 
 /** A person isolates one string and the page watches whose current goes to zero. Times ISO 8601 in UTC, amperes. */
 
@@ -72,12 +73,12 @@ export const isolationPage = z.object({
 export type IsolationPage = z.infer<typeof isolationPage>;
 
 export const isolationStart = z.strictObject({
-  string: z.uuid({ error: 'Choose the string that will be isolated.' }),
+  string: z.uuid({ error: isolationFields.chooseString }),
   personOnSite: z
-    .string({ error: 'Enter the name of the person who isolates the string.' })
+    .string({ error: isolationFields.nameIsolator })
     .trim()
-    .min(2, { error: 'Enter the name of the person who isolates the string.' })
-    .max(120, { error: 'Keep the name to 120 characters.' }),
-  caution: z.literal(true, { error: 'Confirm that the string is isolated by a load-break device only.' }),
+    .min(2, { error: isolationFields.nameIsolator })
+    .max(120, { error: isolationFields.nameTooLong }),
+  caution: z.literal(true, { error: isolationFields.confirmDevice }),
 });
 export type IsolationStart = z.infer<typeof isolationStart>;

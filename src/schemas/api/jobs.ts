@@ -1,8 +1,9 @@
 import { z } from 'zod';
+import { jobFields } from '../../words/fields';
 
 /** Background jobs. Times ISO 8601 in UTC. */
 
-export const retryBody = z.object({ job: z.string().regex(/^\d{1,18}$/, 'No such job.') });
+export const retryBody = z.object({ job: z.string().regex(/^\d{1,18}$/, jobFields.noSuchJob) });
 export type RetryBody = z.infer<typeof retryBody>;
 
 /** Why a job failed; `said`: in words that were written for people. */

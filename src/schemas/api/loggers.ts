@@ -1,5 +1,6 @@
 import { z } from 'zod';
 import { id } from './now';
+import { loggerFields } from '../../words/fields';
 
 /** A site's loggers with their tokens: who may speak, when each last did, what was refused. Times ISO 8601 in UTC. */
 
@@ -56,14 +57,14 @@ export type LoggersPage = z.infer<typeof loggersPage>;
 
 export const tokenParams = z.object({ site: id, logger: id, token: id });
 
-const reason = z.string().trim().max(500, '500 characters at most').default('');
+const reason = z.string().trim().max(500, loggerFields.reasonTooLong).default('');
 export const newToken = z.strictObject({
-  name: z.string().trim().max(80, '80 characters at most').default(''),
+  name: z.string().trim().max(80, loggerFields.nameTooLong).default(''),
   overlapHours: z
-    .number('Give hours, as a number')
-    .int('whole hours')
-    .min(0, 'at least 0 hours')
-    .max(OVERLAP_HOURS_MAX, `at most ${OVERLAP_HOURS_MAX} hours`),
+    .number(loggerFields.giveHours)
+    .int(loggerFields.wholeHours)
+    .min(0, loggerFields.noHoursLess)
+    .max(OVERLAP_HOURS_MAX, loggerFields.hoursTooMany(OVERLAP_HOURS_MAX)),
   reason,
 });
 export type NewToken = z.input<typeof newToken>;

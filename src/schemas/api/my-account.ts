@@ -2,16 +2,20 @@ import { z } from 'zod';
 import { PASSWORD_MAX } from '../../domain/access/password';
 import { id } from './now';
 import { emailField, nameField } from './people';
+import { myAccountFields } from '../../words/fields';
 
 /** One's own account. Times ISO 8601 in UTC. */
 
 const time = z.iso.datetime();
-const password = z.string({ error: 'Enter your password.' }).min(1, 'Enter your password.').max(PASSWORD_MAX);
+const password = z
+  .string({ error: myAccountFields.enterPassword })
+  .min(1, myAccountFields.enterPassword)
+  .max(PASSWORD_MAX);
 const newPassword = z
-  .string({ error: 'Choose a password.' })
-  .min(1, 'Choose a password.')
-  .max(1000, 'Use at most 200 characters.');
-const code = z.string().trim().min(6, 'A code has six digits.').max(20, 'A code has six digits.');
+  .string({ error: myAccountFields.choosePassword })
+  .min(1, myAccountFields.choosePassword)
+  .max(1000, myAccountFields.passwordTooLong);
+const code = z.string().trim().min(6, myAccountFields.sixDigits).max(20, myAccountFields.sixDigits);
 
 export const accountPage = z.object({
   at: time,

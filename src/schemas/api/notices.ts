@@ -1,6 +1,7 @@
 import { z } from 'zod';
 import { HOWS, NOTICE_KINDS, type How, type NoticeKind } from '../../domain/notices/kinds';
 import { id } from './now';
+import { noticeFields } from '../../words/fields';
 
 /** Notices of one person, and what that person has chosen. Times ISO 8601 in UTC. */
 
@@ -70,14 +71,14 @@ export const choiceBody = z
         code: 'custom',
         path: ['quiet'],
         input: value.quiet,
-        message: 'Quiet hours that end when they begin are none, or all day. Choose another hour, or none.',
+        message: noticeFields.quietHoursEmpty,
       });
     if (value.sites?.length === 0)
       issues.push({
         code: 'custom',
         path: ['sites'],
         input: value.sites,
-        message: 'Choose at least one site, or every site.',
+        message: noticeFields.chooseSite,
       });
   });
 export type ChoiceBody = z.infer<typeof choiceBody>;

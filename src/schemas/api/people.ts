@@ -1,23 +1,24 @@
 import { z } from 'zod';
 import { ROLES } from '../../domain/access/permissions';
 import { id } from './now';
+import { peopleFields } from '../../words/fields';
 
 /** People of an organisation and their invitations. Times ISO 8601 in UTC. */
 
 const time = z.iso.datetime();
 const email = z
-  .string({ error: 'Give an e-mail address.' })
+  .string({ error: peopleFields.giveEmail })
   .trim()
-  .max(254, 'Use at most 254 characters.')
-  .regex(/^[^\s@<>"]+@[^\s@<>"]+\.[^\s@<>"]+$/, 'This is no e-mail address: name@place.example');
+  .max(254, peopleFields.emailTooLong)
+  .regex(/^[^\s@<>"]+@[^\s@<>"]+\.[^\s@<>"]+$/, peopleFields.noEmail);
 const name = z
-  .string({ error: 'Give the name.' })
+  .string({ error: peopleFields.giveName })
   .trim()
-  .min(2, 'Give the name.')
-  .max(120, 'Use at most 120 characters.')
-  .refine((text) => !/\p{C}/u.test(text), 'Leave control characters out.');
-const role = z.enum(ROLES, { error: 'Choose a role.' });
-const sites = z.array(id).max(500, 'At most 500 sites.');
+  .min(2, peopleFields.giveName)
+  .max(120, peopleFields.nameTooLong)
+  .refine((text) => !/\p{C}/u.test(text), peopleFields.noControlCharacters);
+const role = z.enum(ROLES, { error: peopleFields.chooseRole });
+const sites = z.array(id).max(500, peopleFields.tooManySites);
 
 export const personItem = z.object({
   id,

@@ -1,5 +1,6 @@
 import { z } from 'zod';
 import { id } from './now';
+import { placingFields } from '../../words/fields';
 
 /** Serials put into slots by somebody who has read the labels on the roof. */
 
@@ -8,7 +9,7 @@ const written = (what: string, max = 500) =>
     .string({ error: what })
     .trim()
     .min(3, { error: what })
-    .max(max, { error: `Keep it to ${max} characters.` });
+    .max(max, { error: placingFields.textTooLong(max) });
 
 export const placeKind = z.enum(['place', 'replace', 'swap', 'move']);
 export type PlaceKind = z.infer<typeof placeKind>;
@@ -26,9 +27,9 @@ export const placeBody = z.strictObject({
   kind: placeKind,
   slots: z.array(placeSlot).min(1).max(2),
   /** What was read on the module, or seen there. */
-  seen: written('Say what you read or saw on the module: its label, its place.'),
-  checked: z.literal(true, { error: 'Confirm that the labels were read on the roof.' }),
-  reason: written('Say why this changes.'),
+  seen: written(placingFields.sayWhatYouRead),
+  checked: z.literal(true, { error: placingFields.confirmLabels }),
+  reason: written(placingFields.sayWhy),
 });
 export type PlaceBody = z.infer<typeof placeBody>;
 

@@ -1,23 +1,18 @@
 import { z } from 'zod';
+import { plannedWorkFields } from '../../words/fields';
 
 /** Planned works at a site. Entered by the clock of the site, kept in UTC. */
 
 /** "2026-12-03T08:00", as an input of the browser gives it. */
-const localTime = z
-  .string()
-  .regex(/^\d{4}-\d{2}-\d{2}T\d{2}:\d{2}$/, 'Give a date and a time, for instance 2026-12-03 08:00.');
+const localTime = z.string().regex(/^\d{4}-\d{2}-\d{2}T\d{2}:\d{2}$/, plannedWorkFields.giveDateAndTime);
 
 export const newPlannedWork = z.object({
   ref: z.uuid(), // made by the form: sent twice, kept once
   from: localTime,
   to: localTime,
-  reason: z
-    .string()
-    .trim()
-    .min(1, 'Say what is done, for instance "New home run of B3".')
-    .max(500, 'Keep it under 500 characters.'),
+  reason: z.string().trim().min(1, plannedWorkFields.sayWhatIsDone).max(500, plannedWorkFields.reasonTooLong),
   /** Public identifiers; null: the whole site. */
-  strings: z.array(z.uuid()).min(1, 'Choose at least one string, or the whole site.').max(2000).nullable(),
+  strings: z.array(z.uuid()).min(1, plannedWorkFields.chooseString).max(2000).nullable(),
 });
 export type NewPlannedWork = z.infer<typeof newPlannedWork>;
 

@@ -1,10 +1,11 @@
 import { z } from 'zod';
 import { READING_KINDS, READING_STAGES } from '../../domain/commissioning/readings/stages';
 import { id } from './now';
+import { readingFields } from '../../words/fields';
 
 /** Meter readings as taken, with what they mean. Volts; times ISO 8601 in UTC. */
 
-const time = z.iso.datetime('Give a time in UTC, as 2026-11-03T10:15:00Z');
+const time = z.iso.datetime(readingFields.giveTimeUtc);
 const LIGHTS = ['bright', 'dull', 'snow', 'night'] as const;
 const METERS = ['high_impedance', 'low_impedance'] as const;
 const COMMANDED = ['released', 'shutdown', 'unknown'] as const;
@@ -19,10 +20,10 @@ export const readingInput = z.strictObject({
   commanded: z.enum(COMMANDED).default('unknown'),
   /** A negative voltage is a finding: reversed. */
   voltage: z
-    .number('Give the voltage as a number')
-    .min(-2000, 'Give a voltage from −2000 to 2000 V')
-    .max(2000, 'Give a voltage from −2000 to 2000 V'),
-  note: z.string().trim().max(2000, 'At most 2000 characters').default(''),
+    .number(readingFields.giveVoltage)
+    .min(-2000, readingFields.voltageRange)
+    .max(2000, readingFields.voltageRange),
+  note: z.string().trim().max(2000, readingFields.noteTooLong).default(''),
   at: time, // by the clock of who took it
   supersedes: id.nullable().default(null),
 });

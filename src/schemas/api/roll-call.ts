@@ -2,6 +2,7 @@ import { z } from 'zod';
 import { heardItem } from '../live';
 import { stepNow } from './commissioning';
 import { commandNow, gatewayNow, id, stringNow } from './now';
+import { rollCallFields } from '../../words/fields';
 
 /** The roll call of a site: who may have answered, who has, and who runs it. Times ISO 8601 in UTC. */
 
@@ -42,11 +43,11 @@ export type RollCallPage = z.infer<typeof rollCallPage>;
 
 export const rollCallStart = z.strictObject({
   personOnSite: z
-    .string({ error: 'Enter the name of the person who is on site.' })
+    .string({ error: rollCallFields.namePerson })
     .trim()
-    .min(2, 'Enter the name of the person who is on site.')
-    .max(120, 'Use at most 120 characters.'),
-  onSite: z.literal(true, { error: 'Confirm that this person is on site now.' }),
+    .min(2, rollCallFields.namePerson)
+    .max(120, rollCallFields.nameTooLong),
+  onSite: z.literal(true, { error: rollCallFields.confirmOnSite }),
 });
 export type RollCallStart = z.infer<typeof rollCallStart>;
 

@@ -1,6 +1,7 @@
 import { z } from 'zod';
 import { outlineFault, OUTLINE_POINTS_MAX, ROOF_MAX_M } from '../../domain/commissioning/roof/outline';
 import { id } from './now';
+import { roofFields } from '../../words/fields';
 
 /** The roof of a site: its outline, and where the strings lie. Metres, y to the north. */
 
@@ -11,7 +12,7 @@ export const roofSlot = z.object({
   position: z.int().min(1).max(63),
   roofX: metres.nullable(),
   roofY: metres.nullable(),
-  roofPlace: z.string().trim().max(200, '200 characters at most'),
+  roofPlace: z.string().trim().max(200, roofFields.nameTooLong),
 });
 export type RoofSlot = z.infer<typeof roofSlot>;
 
@@ -54,6 +55,6 @@ export const roofSave = z.strictObject({
     .array(z.strictObject({ id, seen: z.string().max(100), slots: z.array(roofSlot).min(1).max(63) }))
     .max(2000)
     .default([]),
-  reason: z.string().trim().max(500, '500 characters at most').default(''),
+  reason: z.string().trim().max(500, roofFields.reasonTooLong).default(''),
 });
 export type RoofSave = z.input<typeof roofSave>;

@@ -1,13 +1,14 @@
 import { z } from 'zod';
 import { SAVED_LISTS } from '../../domain/saved-views/lists';
 import { id } from './now';
+import { savedViewFields } from '../../words/fields';
 
 /** A list's address under a name. */
 export const savedViewParams = z.strictObject({ view: id });
 export const savedViewsQuery = z.strictObject({ list: z.enum(SAVED_LISTS) });
 
-const name = z.string().trim().min(1, 'Give the view a name.').max(80, 'A name has up to 80 characters.');
-const query = z.string().max(2000, 'The address is too long to keep.');
+const name = z.string().trim().min(1, savedViewFields.nameView).max(80, savedViewFields.nameTooLong);
+const query = z.string().max(2000, savedViewFields.addressTooLong);
 export const newSavedView = z.strictObject({
   list: z.enum(SAVED_LISTS),
   name,

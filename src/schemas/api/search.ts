@@ -1,7 +1,8 @@
 import { z } from 'zod';
+import { searchFields } from '../../words/fields';
 
 export const searchQuery = z.strictObject({
-  q: z.string().trim().min(2, 'Type two letters or more').max(80),
+  q: z.string().trim().min(2, searchFields.typeMore).max(80),
 });
 
 /** What the search box of the staff pages finds: best first, at most 12. */

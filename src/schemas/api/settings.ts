@@ -2,6 +2,7 @@ import { z } from 'zod';
 import { THRESHOLD_KEYS, THRESHOLDS, type ThresholdKey } from '../../domain/settings/thresholds';
 import { typedNumber } from '../typed-number';
 import { CURRENCIES } from '../lists-and-limits';
+import { settingFields } from '../../words/fields';
 
 /** What an organisation sets for itself. */
 
@@ -33,20 +34,20 @@ const knownZone = (zone: string): boolean => {
 };
 
 export const organisationBody = z.strictObject({
-  name: z.string().trim().min(1, 'Give the organisation a name.').max(120, 'At most 120 characters.'),
+  name: z.string().trim().min(1, settingFields.nameOrganisation).max(120, settingFields.nameTooLong),
   phone: z
     .string()
     .trim()
-    .max(40, 'At most 40 characters.')
-    .regex(/^[+\d\s()/.-]*$/, 'Digits, blanks and + ( ) / . - only.'),
-  timeZone: z.string().refine(knownZone, 'Choose a time zone of the list.'),
+    .max(40, settingFields.phoneTooLong)
+    .regex(/^[+\d\s()/.-]*$/, settingFields.phoneCharacters),
+  timeZone: z.string().refine(knownZone, settingFields.chooseZone),
   currency: z.enum(CURRENCIES).nullable(),
   units: z.enum(UNITS),
   hideRawAfterDays: z
     .number()
-    .int('Whole days.')
-    .min(1, 'One day at least.')
-    .max(90, 'Raw readings are kept for 90 days.')
+    .int(settingFields.wholeDays)
+    .min(1, settingFields.oneDay)
+    .max(90, settingFields.daysTooMany)
     .nullable(),
 });
 export type OrganisationBody = z.infer<typeof organisationBody>;

@@ -1,6 +1,7 @@
 import { z } from 'zod';
 import { customerNow, customerSite } from './customer';
 import { commandNow, id } from './now';
+import { shareFields } from '../../words/fields';
 
 /** Shared pages: what somebody with the link sees, and the links of a site. Times ISO 8601 in UTC. */
 
@@ -48,12 +49,12 @@ export type ShareLinkItem = z.infer<typeof shareLinkItem>;
 export const shareLinks = z.object({ at: time, timeZone: z.string(), links: z.array(shareLinkItem) });
 export type ShareLinks = z.infer<typeof shareLinks>;
 
-const ORIGIN = 'Give scheme and host as https://screens.example, without a path, or leave it empty.';
+const ORIGIN = shareFields.giveFrameOrigin;
 /** scheme://host or scheme://host:port as browsers write it, so that nothing else gets into a header. */
 const origin = z
   .string()
   .trim()
-  .max(200, 'At most 200 characters.')
+  .max(200, shareFields.originTooLong)
   .transform((text) => text.replace(/\/$/, '').toLowerCase())
   .refine(
     (text) =>
@@ -63,16 +64,16 @@ const origin = z
 
 export const shareLinkBody = z
   .strictObject({
-    label: z.string().trim().min(1, 'A label is missing.').max(80, 'At most 80 characters.'),
+    label: z.string().trim().min(1, shareFields.labelMissing).max(80, shareFields.labelTooLong),
     kiosk: z.boolean(),
     /** The last day on which it works, at the site; null: until somebody ends it. */
-    endsOn: z.iso.date('Give a day, or leave it empty.').nullable(),
+    endsOn: z.iso.date(shareFields.giveDay).nullable(),
     /** Of a lobby screen: the origin of a page that may show it in a frame; null: none may. */
     framedBy: origin.nullable().default(null),
   })
   .refine((body) => body.kiosk || body.framedBy === null, {
     path: ['framedBy'],
-    message: 'Only a lobby screen may stand in a frame.',
+    message: shareFields.onlyScreensFramed,
   });
 export type ShareLinkBody = z.infer<typeof shareLinkBody>;
 

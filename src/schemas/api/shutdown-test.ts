@@ -11,6 +11,7 @@ import {
 } from '../../domain/commissioning/shutdown-test-record';
 import type { TestVerdict } from '../../domain/commissioning/shutdown-test-verdict';
 import { id } from './now';
+import { shutdownTestFields } from '../../words/fields';
 
 /** Shutdown tests: guided, signed, listed. Times ISO 8601 in UTC; V and s. */
 
@@ -22,34 +23,34 @@ const name = (what: string) =>
     .string({ error: `Enter ${what}.` })
     .trim()
     .min(2, `Enter ${what}.`)
-    .max(120, 'Use at most 120 characters.');
-const text = (most: number) => z.string().trim().max(most, `Use at most ${most} characters.`);
-const day = z.iso.date({ error: 'Enter the day as year-month-day.' });
+    .max(120, shutdownTestFields.nameTooLong);
+const text = (most: number) => z.string().trim().max(most, shutdownTestFields.textTooLong(most));
+const day = z.iso.date({ error: shutdownTestFields.enterDay });
 const volts = z
-  .number({ error: 'Type a voltage from −2000 to 2000 V.' })
-  .min(-2000, 'Type a voltage from −2000 to 2000 V.')
-  .max(2000, 'Type a voltage from −2000 to 2000 V.')
+  .number({ error: shutdownTestFields.voltageRange })
+  .min(-2000, shutdownTestFields.voltageRange)
+  .max(2000, shutdownTestFields.voltageRange)
   .nullable();
 const round = z.int().min(0).max(99);
 
 export const instrument = z.strictObject({
-  name: name('make and model of the instrument'),
-  serial: name('the serial number of the instrument'),
+  name: name(shutdownTestFields.makeAndModel),
+  serial: name(shutdownTestFields.serialNumber),
   category: z.enum(CATEGORIES),
   ratedV: z
-    .number({ error: 'Type the rated voltage from 50 to 2000 V.' })
-    .min(50, 'Type the rated voltage from 50 to 2000 V.')
-    .max(2000, 'Type the rated voltage from 50 to 2000 V.'),
+    .number({ error: shutdownTestFields.ratedRange })
+    .min(50, shutdownTestFields.ratedRange)
+    .max(2000, shutdownTestFields.ratedRange),
   calibratedOn: day,
   provedBefore: z.boolean(),
 });
 
 export const testPlan = z.strictObject({
-  onSite: name('the name of the person who is on site'),
-  operator: name('the name of the person who operates the initiator'),
+  onSite: name(shutdownTestFields.personOnSite),
+  operator: name(shutdownTestFields.personOperating),
   others: text(400),
-  strings: z.array(id).min(1, 'Choose at least one string.').max(500),
-  rounds: z.array(id.nullable()).min(1, 'Keep at least one round.').max(60),
+  strings: z.array(id).min(1, shutdownTestFields.chooseString).max(500),
+  rounds: z.array(id.nullable()).min(1, shutdownTestFields.keepRound).max(60),
   light: z.enum(LIGHTS),
   weather: text(200),
   instrument: instrument.nullable(),
@@ -57,7 +58,7 @@ export const testPlan = z.strictObject({
 
 export const act = z.discriminatedUnion('kind', [
   z.strictObject({ kind: z.literal('planned'), plan: testPlan }),
-  z.strictObject({ kind: z.literal('caution_accepted'), name: name('your name') }),
+  z.strictObject({ kind: z.literal('caution_accepted'), name: name(shutdownTestFields.yourName) }),
   z.strictObject({ kind: z.literal('round_added'), transmitter: id.nullable() }),
   z.strictObject({ kind: z.literal('watch_started'), round }),
   z.strictObject({ kind: z.literal('operated'), round }),
@@ -69,8 +70,8 @@ export const act = z.discriminatedUnion('kind', [
     moment: z.enum(['before', 'after']),
     afterS: z
       .number()
-      .min(0, 'Type the seconds from 0 to 7200.')
-      .max(7200, 'Type the seconds from 0 to 7200.')
+      .min(0, shutdownTestFields.secondsRange)
+      .max(7200, shutdownTestFields.secondsRange)
       .nullable(),
     secondsFrom: z.enum(['clock', 'typed']),
     atInverterEnd: z.boolean(),
@@ -81,11 +82,15 @@ export const act = z.discriminatedUnion('kind', [
     }),
     note: text(400),
   }),
-  z.strictObject({ kind: z.literal('reading_struck'), reading: z.uuid(), reason: name('why it is struck') }),
+  z.strictObject({
+    kind: z.literal('reading_struck'),
+    reading: z.uuid(),
+    reason: name(shutdownTestFields.whyStruck),
+  }),
   z.strictObject({ kind: z.literal('released'), round }),
   z.strictObject({ kind: z.literal('round_ended'), round }),
   z.strictObject({ kind: z.literal('proved_after'), proved: z.boolean() }),
-  z.strictObject({ kind: z.literal('remark'), text: text(1000).min(1, 'Type something.') }),
+  z.strictObject({ kind: z.literal('remark'), text: text(1000).min(1, shutdownTestFields.typeSomething) }),
 ]) satisfies z.ZodType<Act>;
 
 /** Acts carry ids made on the phone: sent twice they count once. */
@@ -102,16 +107,19 @@ export type StartTest = z.infer<typeof startBody>;
 
 export const endBody = z.strictObject({
   reason: z
-    .string({ error: 'Say why the test is ended without a signature.' })
+    .string({ error: shutdownTestFields.sayWhyEnded })
     .trim()
-    .min(3, 'Say why the test is ended without a signature.')
-    .max(2000, 'Use at most 2000 characters.'),
+    .min(3, shutdownTestFields.sayWhyEnded)
+    .max(2000, shutdownTestFields.reasonTooLong),
 });
 
 export const signBody = z.strictObject({
-  password: z.string({ error: 'Enter your password.' }).min(1, 'Enter your password.').max(1000),
+  password: z
+    .string({ error: shutdownTestFields.enterPassword })
+    .min(1, shutdownTestFields.enterPassword)
+    .max(1000),
   /** Of what the page showed: what has changed since is not signed unseen. */
-  fingerprint: z.string().regex(/^[0-9a-f]{64}$/, 'Reload the page.'),
+  fingerprint: z.string().regex(/^[0-9a-f]{64}$/, shutdownTestFields.reload),
 });
 export type SignTest = z.infer<typeof signBody>;
 

@@ -2,6 +2,7 @@ import { z } from 'zod';
 import { EVENT_KINDS } from '../../domain/verdicts/codes';
 import { acknowledgement, siteContact } from './fleet';
 import { causeNow, commandNow, eventItem, gatewayNow, id, inverterNow, siteNow, stringNow } from './now';
+import { siteFields } from '../../words/fields';
 
 const time = z.iso.datetime();
 
@@ -41,7 +42,7 @@ export const eventsQuery = z.strictObject({
   kind: z.enum(EVENT_KINDS).optional(),
   before: z
     .string()
-    .regex(/^\d{1,16}\.\d{1,18}$/, 'take it from the page before')
+    .regex(/^\d{1,16}\.\d{1,18}$/, siteFields.fromThePageBefore)
     .optional(),
   limit: z.coerce.number().int().min(1).max(200).default(25),
 });

@@ -1,5 +1,6 @@
 import { z } from 'zod';
 import { eventItem, id, stringNow } from './now';
+import { stringFields } from '../../words/fields';
 
 /** What the page of one string shows and what its endpoints answer. SI units; instants ISO 8601 or epoch seconds. */
 
@@ -65,7 +66,7 @@ export type StringPage = z.infer<typeof stringPage>;
 export const HISTORY_RANGES = ['day', 'week', 'month', 'year'] as const;
 export type HistoryRange = (typeof HISTORY_RANGES)[number];
 
-const day = z.iso.date('Give a day as 2026-11-03');
+const day = z.iso.date(stringFields.giveDay);
 export const HISTORY_QUANTITIES = ['voltage', 'current', 'power'] as const;
 export type HistoryQuantity = (typeof HISTORY_QUANTITIES)[number];
 
@@ -139,7 +140,7 @@ export const unitsQuery = z.strictObject({
   /** Positions with commas; absent: all. */
   positions: z
     .string()
-    .regex(/^\d{1,2}(,\d{1,2}){0,62}$/, 'Give positions with commas, as 5,9')
+    .regex(/^\d{1,2}(,\d{1,2}){0,62}$/, stringFields.givePositions)
     .optional(),
 });
 export type UnitsQuery = z.infer<typeof unitsQuery>;

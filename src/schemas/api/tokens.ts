@@ -1,6 +1,7 @@
 import { z } from 'zod';
 import { TOKEN_DAYS, TOKEN_SCOPES } from '../../domain/access/scopes';
 import { id } from './now';
+import { tokenFields } from '../../words/fields';
 
 /** Tokens of one's own, for programs. Times ISO 8601 in UTC. */
 
@@ -30,18 +31,18 @@ export type TokensPage = z.infer<typeof tokensPage>;
 
 export const makeTokenBody = z.strictObject({
   name: z
-    .string({ error: 'Give it a name.' })
+    .string({ error: tokenFields.giveName })
     .trim()
-    .min(1, 'Give it a name: what will use it?')
-    .max(80, 'Use at most 80 characters.')
-    .refine((text) => !/\p{C}/u.test(text), 'Leave control characters out.'),
-  scopes: z.array(z.enum(TOKEN_SCOPES)).min(1, 'Choose at least one thing that it may do.').max(20),
+    .min(1, tokenFields.whatWillUseIt)
+    .max(80, tokenFields.nameTooLong)
+    .refine((text) => !/\p{C}/u.test(text), tokenFields.noControlCharacters),
+  scopes: z.array(z.enum(TOKEN_SCOPES)).min(1, tokenFields.chooseScope).max(20),
   /** Empty: every site that its person sees. */
-  sites: z.array(id).max(500, 'At most 500 sites.').default([]),
+  sites: z.array(id).max(500, tokenFields.tooManySites).default([]),
   days: z
-    .number({ error: 'Choose how long it holds.' })
-    .refine((days) => (TOKEN_DAYS as readonly number[]).includes(days), 'Choose how long it holds.'),
-  current: z.string({ error: 'Enter your password.' }).min(1, 'Enter your password.').max(1000),
+    .number({ error: tokenFields.chooseDays })
+    .refine((days) => (TOKEN_DAYS as readonly number[]).includes(days), tokenFields.chooseDays),
+  current: z.string({ error: tokenFields.enterPassword }).min(1, tokenFields.enterPassword).max(1000),
 });
 export type MakeToken = z.infer<typeof makeTokenBody>;
 

@@ -1,6 +1,7 @@
 import { z } from 'zod';
 import { KINDS, NOTICE_KINDS } from '../../domain/notices/kinds';
 import { id } from './now';
+import { webhookFields } from '../../words/fields';
 
 /** Calls to other systems. Times ISO 8601 in UTC. */
 
@@ -10,16 +11,12 @@ const time = z.iso.datetime();
 export const CALL_KINDS = NOTICE_KINDS.filter((kind) => KINDS[kind].callable);
 export const isCallKind = (kind: string): boolean => CALL_KINDS.some((k) => k === kind);
 
-const name = z
-  .string()
-  .trim()
-  .min(1, 'Give it a name, so that others know what is called.')
-  .max(80, 'At most 80 characters.');
-const url = z.string().trim().min(1, 'Enter the address that is called.').max(2000);
+const name = z.string().trim().min(1, webhookFields.nameIt).max(80, webhookFields.nameTooLong);
+const url = z.string().trim().min(1, webhookFields.enterAddress).max(2000);
 const kinds = z
   .array(z.enum(NOTICE_KINDS))
-  .min(1, 'Choose at least one kind.')
-  .refine((list) => list.every(isCallKind), 'One of these kinds is not told to other systems.')
+  .min(1, webhookFields.chooseKind)
+  .refine((list) => list.every(isCallKind), webhookFields.kindNotTold)
   .transform((list) => [...new Set(list)]);
 
 export const webhookBody = z.strictObject({ name, url, kinds });

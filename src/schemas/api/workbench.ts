@@ -3,11 +3,12 @@ import { COMMANDS, UNIT_STATES, VERDICTS } from '../../domain/verdicts/codes';
 import { HISTORY_QUANTITIES, HISTORY_RANGES, UNIT_QUANTITIES } from './string';
 import { id } from './now';
 import type { WorkbenchView } from './workbench-view';
+import { workbenchFields } from '../../words/fields';
 
 /** A string looked into: what its page shows as its address says, and what the workbench's endpoints answer. */
 
 const epoch = z.coerce.number().int().min(1_500_000_000).max(4_102_444_800);
-const day = z.iso.date('Give a day as 2026-11-03');
+const day = z.iso.date(workbenchFields.giveDay);
 
 /** Every choice of the page, as it stands in the address; what can't be read there is as if it were left out. */
 export const workbenchView: z.ZodType<WorkbenchView> = z.object({

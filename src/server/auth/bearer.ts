@@ -3,6 +3,7 @@ import { AppError } from '../errors';
 import { holderOf, type TokenHolder } from '../queries/api-tokens';
 import { takeWrongToken } from './limits';
 import { API_TOKEN_PATTERN, tokenHash } from './secret-link';
+import { bearerRefusals } from '../../words/refusals';
 
 const refused = (message: string): AppError => new AppError('unauthenticated', { message });
 const minuteOf = (at: Date): string => `${at.toISOString().slice(0, 16).replace('T', ' ')} UTC`;
@@ -16,19 +17,17 @@ export async function holderOfBearer(
   address: string,
   at: Date,
 ): Promise<TokenHolder> {
-  if (authorization === null)
-    throw refused('Send a token: Authorization: Bearer TOKEN. Tokens are made on the account page.');
+  if (authorization === null) throw refused(bearerRefusals.sendToken);
   const token = /^Bearer +(\S+)$/i.exec(authorization.trim())?.[1];
   const holder =
     token && API_TOKEN_PATTERN.test(token) ? await holderOf(tokenHash(token), address) : undefined;
   if (!holder) {
     await takeWrongToken(address);
-    throw refused('Nobody knows this token. Check that all of it was sent, as Authorization: Bearer TOKEN.');
+    throw refused(bearerRefusals.unknownToken);
   }
-  if (holder.endedAt) throw refused(`This token was ended at ${minuteOf(holder.endedAt)}. Make a new one.`);
-  if (holder.expiresAt <= at)
-    throw refused(`This token ran out at ${minuteOf(holder.expiresAt)}. Make a new one on the account page.`);
-  if (!holder.active) throw refused('The person whose token this is can’t sign in any more.');
+  if (holder.endedAt) throw refused(bearerRefusals.tokenEnded(minuteOf(holder.endedAt)));
+  if (holder.expiresAt <= at) throw refused(bearerRefusals.tokenRanOut(minuteOf(holder.expiresAt)));
+  if (!holder.active) throw refused(bearerRefusals.personGone);
   return holder;
 }
 

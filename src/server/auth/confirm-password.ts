@@ -2,6 +2,7 @@ import { AppError } from '../errors';
 import { passwordHashOf } from '../queries/people';
 import { forgiveSigner, takeSigningTry } from './limits';
 import { verifyPassword } from './password';
+import { confirmPasswordRefusals } from '../../words/refusals';
 
 /**
  * The password entered again by somebody who is signed in, before something is signed in their name.
@@ -11,8 +12,8 @@ export async function confirmPassword(personId: number, password: string): Promi
   await takeSigningTry(personId);
   if (!(await verifyPassword(await passwordHashOf(personId), password)))
     throw new AppError('invalid', {
-      message: 'This is not your password. Enter the one that you sign in with; nothing was signed.',
-      fields: [{ field: 'password', message: 'This is not your password.' }],
+      message: confirmPasswordRefusals.notYoursNothingSigned,
+      fields: [{ field: 'password', message: confirmPasswordRefusals.notYours }],
     });
   await forgiveSigner(personId);
 }

@@ -1,6 +1,7 @@
 import { RateLimiterPostgres, RateLimiterRes } from 'rate-limiter-flexible';
 import { signInPool } from '../db/pools';
 import { AppError } from '../errors';
+import { limitWords } from '../../words/refusals';
 
 const limiter = (keyPrefix: string, points: number, duration: number) =>
   new RateLimiterPostgres({
@@ -22,14 +23,14 @@ let limits: Limits | undefined;
 const signInLimits = (): Limits =>
   (limits ??= { account: limiter('account', 10, 900), address: limiter('address', 50, 900) });
 
-async function take(from: RateLimiterPostgres, key: string, what = 'sign in'): Promise<void> {
+async function take(from: RateLimiterPostgres, key: string, what = limitWords.signIn): Promise<void> {
   try {
     await from.consume(key.slice(0, 200));
   } catch (blocked) {
     if (!(blocked instanceof RateLimiterRes)) throw blocked;
     const seconds = Math.max(1, Math.ceil(blocked.msBeforeNext / 1000));
     throw new AppError('too_many', {
-      message: `Too many tries to ${what}. Wait ${seconds > 90 ? `${Math.ceil(seconds / 60)} minutes` : `${seconds} seconds`}, then try again.`,
+      message: limitWords.tooMany(what, seconds),
       retryAfterS: seconds,
     });
   }
@@ -52,7 +53,7 @@ const signingLimit = (): RateLimiterPostgres => (signing ??= limiter('signing', 
 
 /** Counts a try to sign something with the password; throws `too_many` with the wait. */
 export const takeSigningTry = (personId: number): Promise<void> =>
-  take(signingLimit(), String(personId), 'sign with your password');
+  take(signingLimit(), String(personId), limitWords.signWithPassword);
 
 /** A right password clears the count. */
 export async function forgiveSigner(personId: number): Promise<void> {
@@ -77,22 +78,22 @@ const letterLimits = (): LetterLimits =>
 
 /** Counts a letter that somebody asked for; throws `too_many` with the wait, whether the account exists or not. */
 export async function takeLetterTry(email: string, address: string): Promise<void> {
-  await take(letterLimits().address, address, 'ask for a letter');
-  await take(letterLimits().account, email.trim().toLowerCase(), 'ask for a letter');
+  await take(letterLimits().address, address, limitWords.askForLetter);
+  await take(letterLimits().account, email.trim().toLowerCase(), limitWords.askForLetter);
 }
 
 /** Counts a link of a letter that somebody tries from an address. */
 export const takeTokenTry = (address: string): Promise<void> =>
-  take(letterLimits().token, address, 'use a link');
+  take(letterLimits().token, address, limitWords.useLink);
 
 let sharing: RateLimiterPostgres | undefined;
 /** Reads of one shared page from one address: 600 in 15 minutes, some twenty screens behind one connection. */
 export const takeSharedRead = (link: number, address: string): Promise<void> =>
-  take((sharing ??= limiter('shared', 600, 900)), `${link} ${address}`, 'read this page');
+  take((sharing ??= limiter('shared', 600, 900)), `${link} ${address}`, limitWords.readPage);
 
 /** Counts a one-time code that somebody tries; a right one clears the count. */
 export const takeCodeTry = (personId: number): Promise<void> =>
-  take(letterLimits().code, String(personId), 'use a code');
+  take(letterLimits().code, String(personId), limitWords.useCode);
 export async function forgiveCodes(personId: number): Promise<void> {
   await letterLimits().code.delete(String(personId));
 }
@@ -103,7 +104,7 @@ const wrongTokenLimit = (): RateLimiterPostgres => (wrongTokens ??= limiter('wro
 
 /** Counts a token that nobody knows; throws `too_many` with the wait. */
 export const takeWrongToken = (address: string): Promise<void> =>
-  take(wrongTokenLimit(), address, 'use a token');
+  take(wrongTokenLimit(), address, limitWords.useToken);
 
 /** Requests of one token in a minute. */
 export const API_LIMIT = { requests: 600, windowS: 60 } as const;

@@ -3,6 +3,7 @@ import { NodePostgresAdapter } from '@lucia-auth/adapter-postgresql';
 import { Lucia, TimeSpan, type Adapter, type DatabaseSession, type Session, type User } from 'lucia';
 import type { Actor, Role } from '../../domain/access/permissions';
 import { config } from '../config';
+import type { Pool } from 'pg';
 import { signInPool } from '../db/pools';
 import { personOfSession } from '../queries/people';
 import { describeSession } from '../queries/sessions';
@@ -24,8 +25,8 @@ export const sessionHash = (sessionId: string): string =>
   createHash('sha256').update(sessionId).digest('hex');
 
 /** Keeps only a hash of each session's id: whoever reads the table cannot sign in with it. */
-function hashingAdapter(): Adapter {
-  const inner = new NodePostgresAdapter(signInPool(), { user: 'person', session: 'session' });
+function hashingAdapter(pool: Pool): Adapter {
+  const inner = new NodePostgresAdapter(pool, { user: 'person', session: 'session' });
   return {
     getSessionAndUser: async (id) => {
       const [session, user] = await inner.getSessionAndUser(sessionHash(id));
@@ -41,8 +42,8 @@ function hashingAdapter(): Adapter {
 }
 
 /** "Keep me signed in" lasts 30 days of absence; without it the browser's session, 12 hours at most. */
-function make(kept: boolean) {
-  return new Lucia(hashingAdapter(), {
+function make(pool: Pool, kept: boolean) {
+  return new Lucia(hashingAdapter(pool), {
     sessionExpiresIn: kept ? new TimeSpan(30, 'd') : new TimeSpan(12, 'h'),
     sessionCookie: {
       name: kept ? 'wakeline_kept' : 'wakeline_session',
@@ -52,11 +53,14 @@ function make(kept: boolean) {
     getUserAttributes: (person) => ({ active: person.active }),
   });
 }
-let both: { kept: Lucia; brief: Lucia } | undefined;
-const lucias = () => {
-  const made = (both ??= { kept: make(true), brief: make(false) });
-  return [made.kept, made.brief] as const;
-};
+type Both = readonly [kept: Lucia, brief: Lucia];
+const made = new WeakMap<Pool, Both>(); // pools are closed and made anew
+function lucias(): Both {
+  const pool = signInPool();
+  const both: Both = made.get(pool) ?? [make(pool, true), make(pool, false)];
+  made.set(pool, both);
+  return both;
+}
 
 export interface SignedIn {
   actor: Actor;

@@ -1,6 +1,7 @@
 import sharp from 'sharp';
 import { PHOTO_MAX_PIXELS, THUMBNAIL_PIXELS } from '../../schemas/api/attachments';
 import { AppError } from '../errors';
+import { photoRefusals } from '../../words/refusals';
 
 /** A photo as it is kept: turned upright, made smaller, and free of what the camera wrote into it. */
 export interface Photo {
@@ -49,12 +50,10 @@ export const readPhoto = (file: string, keepPlace: boolean): Promise<Photo> =>
       const { width, height } = await sharp(file, { limitInputPixels: false }).metadata();
       size = { width, height };
     } catch {
-      throw unreadable('The picture is damaged: it can’t be read. Take or export it again.');
+      throw unreadable(photoRefusals.damaged);
     }
     if (size.width * size.height > PIXELS_MAX)
-      throw unreadable(
-        `The picture has ${size.width} × ${size.height} pixels; at most ${PIXELS_MAX / 1_000_000} million are taken. Make it smaller.`,
-      );
+      throw unreadable(photoRefusals.tooManyPixels(size.width, size.height, PIXELS_MAX / 1_000_000));
     try {
       const upright = open()
         .autoOrient()
@@ -82,7 +81,7 @@ export const readPhoto = (file: string, keepPlace: boolean): Promise<Photo> =>
       return { data, width: info.width, height: info.height, thumbnail };
     } catch (error) {
       throw unreadable(
-        `The picture can’t be read to its end (${error instanceof Error ? (error.message.split('\n')[0] ?? '') : 'damaged'}). Take or export it again.`,
+        photoRefusals.unreadable(error instanceof Error ? (error.message.split('\n')[0] ?? '') : 'damaged'),
       );
     }
   });

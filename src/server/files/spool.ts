@@ -7,6 +7,7 @@ import { pipeline } from 'node:stream/promises';
 import type { ReadableStream } from 'node:stream/web';
 import { AppError } from '../errors';
 import { SNIFF_BYTES } from './sniff';
+import { uploadRefusals } from '../../words/refusals';
 
 /** A body on disk: however large it is, no more than a chunk of it lies in memory. */
 export interface Spooled {
@@ -16,11 +17,11 @@ export interface Spooled {
 }
 
 const megabytes = (bytes: number): number => Math.round(bytes / (1024 * 1024));
-const SMALLER = 'Take the photo with a lower resolution, or make the file smaller.';
+const SMALLER = uploadRefusals.takeSmaller;
 const tooLarge = (limit: number, remedy: string): AppError =>
   new AppError('too_large', {
-    message: `The file is larger than ${megabytes(limit)} MB. ${remedy}`,
-    fields: [{ field: 'body', message: `At most ${megabytes(limit)} MB` }],
+    message: uploadRefusals.tooLarge(megabytes(limit), remedy),
+    fields: [{ field: 'body', message: uploadRefusals.atMost(megabytes(limit)) }],
   });
 
 /**
@@ -36,8 +37,8 @@ export async function spool(
   if (Number(request.headers.get('content-length') ?? 0) > limit) throw tooLarge(limit, remedy);
   if (!request.body)
     throw new AppError('invalid', {
-      message: 'No file came. Choose one and send it again.',
-      fields: [{ field: 'body', message: 'Send the file as the body.' }],
+      message: uploadRefusals.noFile,
+      fields: [{ field: 'body', message: uploadRefusals.sendAsBody }],
     });
   const folder = await mkdtemp(path.join(tmpdir(), 'wakeline-file-'));
   const remove = () => rm(folder, { recursive: true, force: true });
@@ -63,8 +64,8 @@ export async function spool(
     await remove();
     if (error instanceof AppError || !brokeOff(error)) throw error;
     throw new AppError('invalid', {
-      message: 'The upload broke off. Send the file again; what arrived twice is kept once.',
-      fields: [{ field: 'body', message: 'The upload broke off.' }],
+      message: uploadRefusals.brokeOffSendAgain,
+      fields: [{ field: 'body', message: uploadRefusals.brokeOff }],
     });
   }
   return { path: file, bytes, head, remove };

@@ -1,11 +1,11 @@
 import { AppError } from '../errors';
+import { bodyRefusals } from '../../words/refusals';
 
 export const BODY_MAX_BYTES = 256 * 1024;
 
 /** The body as text, cut off where it grows past the limit whatever its length header says. */
 async function limitedText(request: Request, limit: number): Promise<string> {
-  const tooLarge = () =>
-    new AppError('too_large', { message: `The body is larger than ${limit} bytes. Send less at once.` });
+  const tooLarge = () => new AppError('too_large', { message: bodyRefusals.tooLarge(limit) });
   if (Number(request.headers.get('content-length') ?? 0) > limit) throw tooLarge();
   if (!request.body) return '';
   const chunks: Uint8Array[] = [];
@@ -31,15 +31,15 @@ export async function readBody(request: Request, limit = BODY_MAX_BYTES): Promis
   if (type === 'application/x-www-form-urlencoded') return Object.fromEntries(new URLSearchParams(text));
   if (type !== 'application/json')
     throw new AppError('invalid', {
-      message: `The body has content type "${type || 'none'}"; send application/json.`,
-      fields: [{ field: 'content-type', message: 'send application/json' }],
+      message: bodyRefusals.contentType(type ?? ''),
+      fields: [{ field: 'content-type', message: bodyRefusals.sendJson }],
     });
   try {
     return JSON.parse(text) as unknown;
   } catch (error) {
-    const reason = error instanceof Error ? error.message : 'not readable';
+    const reason = error instanceof Error ? error.message : bodyRefusals.unreadable;
     throw new AppError('invalid', {
-      message: `The body is not JSON: ${reason}`,
+      message: bodyRefusals.noJson(reason),
       fields: [{ field: 'body', message: reason }],
     });
   }

@@ -4,6 +4,7 @@ import { request as httpsRequest } from 'node:https';
 import { isIP, type LookupFunction } from 'node:net';
 import { performance } from 'node:perf_hooks';
 import { isLoopback, isPublicAddress } from './private-address';
+import { callOutRefusals } from '../../words/refusals';
 
 /** A POST to an address that somebody entered: guarded, bounded in time and in what is read back. */
 
@@ -32,16 +33,16 @@ export class AddressRefused extends Error {}
 
 /** What an address may be, before a name is resolved. @returns what is wrong, or undefined */
 export function faultOfUrl(text: string, within: CallLimits['within']): string | undefined {
-  if (!URL.canParse(text)) return 'This is no address. Begin with https://.';
+  if (!URL.canParse(text)) return callOutRefusals.noAddress;
   const url = new URL(text);
-  if (url.username || url.password) return 'Leave out name and password: the signature proves who calls.';
+  if (url.username || url.password) return callOutRefusals.noPassword;
   const host = url.hostname.replace(/^\[|\]$/g, '');
   const local = isIP(host) ? isLoopback(host) : host === 'localhost' || host.endsWith('.localhost');
   const plainAllowed = within === 'everything' || (within === 'loopback' && local);
   if (url.protocol !== 'https:' && !(url.protocol === 'http:' && plainAllowed))
-    return 'Use https://: what is called carries facts of your sites.';
+    return callOutRefusals.useHttps;
   if ((isIP(host) && !isAllowed(host, within)) || (local && within === 'nothing'))
-    return 'This address is inside a private network. Use one that the public network reaches.';
+    return callOutRefusals.privateAddress;
   return undefined;
 }
 
@@ -58,7 +59,7 @@ const guardedLookup =
       const [first] = addresses;
       if (bad || !first)
         return callback(
-          new AddressRefused(`${hostname} leads to ${bad?.address ?? 'nothing'}, a private address`),
+          new AddressRefused(callOutRefusals.leadsToPrivate(hostname, bad?.address ?? 'nothing')),
           [],
         );
       if (options.all) callback(null, addresses);
@@ -83,7 +84,7 @@ export function callOut(call: CallOut, limits: CallLimits): Promise<CallAnswer> 
     const signal = AbortSignal.timeout(limits.timeoutMs);
     const url = new URL(call.url);
     const send = url.protocol === 'https:' ? httpsRequest : httpRequest;
-    const late = `no complete answer within ${limits.timeoutMs / 1000} s`;
+    const late = callOutRefusals.noAnswer(limits.timeoutMs / 1000);
     const request = send(
       url,
       {

@@ -8,6 +8,7 @@ import { asOnlooker } from '../replica';
 import { readBody } from './body';
 import { hasJustWritten } from './just-written';
 import { problem } from './problem';
+import { endpointRefusals } from '../../words/refusals';
 
 /**
  * The one wrapper of API routes: who may, what comes in, what goes out when it fails.
@@ -48,8 +49,7 @@ export function checked<T extends z.ZodType>(
     message: i.message,
   }));
   // an identifier that cannot exist is a thing that is not there
-  if (where === 'path')
-    throw new AppError('not_found', { message: 'No such address. Check the link, or go back to the fleet.' });
+  if (where === 'path') throw new AppError('not_found', { message: endpointRefusals.noSuchAddress });
   throw new AppError('invalid', {
     message: fields.map((f) => `${f.field}: ${f.message}`).join('; '),
     fields,
@@ -83,9 +83,8 @@ function checkPerson({ request, locals }: APIContext): void {
   const named = request.headers.get(PERSON_HEADER);
   if (named !== null && named !== locals.viewer?.id)
     throw new AppError('forbidden', {
-      message:
-        'Another person is signed in by now. Sign in as the person who recorded this, then it is sent.',
-      fields: [{ field: PERSON_HEADER, message: 'Another person is signed in by now.' }],
+      message: endpointRefusals.anotherPersonSendLater,
+      fields: [{ field: PERSON_HEADER, message: endpointRefusals.anotherPerson }],
     });
 }
 
@@ -105,11 +104,11 @@ export function endpoint<P extends z.ZodType, Q extends z.ZodType, B extends z.Z
   return async (context) => {
     try {
       const { actor } = context.locals;
-      if (!actor) throw new AppError('unauthenticated', { message: 'Sign in, then try again.' });
+      if (!actor) throw new AppError('unauthenticated', { message: endpointRefusals.signIn });
       checkPerson(context);
       if (!mayUse(actor.role, spec.permission))
         throw new AppError('forbidden', {
-          message: `The role ${actor.role} does not include this. Ask a manager.`,
+          message: endpointRefusals.roleLacksThis(actor.role),
         });
       const call = await parsed(spec, context);
       const received = (await spec.receive?.({ ...call, actor })) as R;

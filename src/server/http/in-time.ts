@@ -1,4 +1,5 @@
 import { AppError } from '../errors';
+import { inTimeRefusals } from '../../words/refusals';
 
 /**
  * The answer of a database that may stand still without a word: it keeps no limit then, and a page would wait for ever.
@@ -12,8 +13,7 @@ export async function inTime<T>(ms: number, answer: Promise<T>): Promise<T> {
       () =>
         reject(
           new AppError('unavailable', {
-            message:
-              'The database does not answer in time. Readings already acknowledged are kept; try again in a minute.',
+            message: inTimeRefusals.databaseLate,
             retryAfterS: 10,
           }),
         ),

@@ -9,6 +9,7 @@ import { asOnlooker } from '../replica';
 import { hasJustWritten } from './just-written';
 import { inTime } from './in-time';
 import { explain } from './problem';
+import { pageRefusals } from '../../words/refusals';
 
 /** Statements end after 30 s by themselves, unless the database stands still. */
 const READ_WITHIN_MS = 35_000;
@@ -33,8 +34,7 @@ export async function page<T>(
   const { actor, viewer } = astro.locals;
   if (!actor || !viewer) return astro.redirect(paths.signIn(astro.url.pathname + astro.url.search), 303);
   try {
-    if (!mayUse(actor.role, permission))
-      throw new AppError('forbidden', { message: 'This page is for the people who look after sites.' });
+    if (!mayUse(actor.role, permission)) throw new AppError('forbidden', { message: pageRefusals.forStaff });
     const work = (tx: Tx): Promise<T> => load({ actor, tx });
     const data = mayLag ? asOnlooker(actor, work, hasJustWritten(astro.request)) : asActor(actor, work);
     return { actor, viewer, data: await inTime(READ_WITHIN_MS, data) };
@@ -53,8 +53,8 @@ function problemPage(astro: AstroGlobal, error: unknown): Promise<Response> {
   if (!known || ERROR_KINDS[known.kind].status > 499) log.error({ error }, 'a page failed');
   astro.locals.problem = {
     status: known ? ERROR_KINDS[known.kind].status : 500,
-    title: known ? ERROR_KINDS[known.kind].title : 'Something failed on our side',
-    message: known?.message ?? `Try again; if it stays, report it with the number ${astro.locals.requestId}.`,
+    title: known ? ERROR_KINDS[known.kind].title : pageRefusals.failedHere,
+    message: known?.message ?? pageRefusals.tryAgain(astro.locals.requestId),
   };
   return astro.rewrite('/problem');
 }

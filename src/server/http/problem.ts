@@ -1,12 +1,13 @@
 import { AppError, ERROR_KINDS, isDatabaseAway, type ErrorKind } from '../errors';
 import { log } from '../log';
+import { problemWords } from '../../words/refusals';
 
 /** Any thrown thing as a kind and a detail; what is not ours to explain becomes undefined. */
 export function explain(error: unknown): AppError | undefined {
   if (error instanceof AppError) return error;
   if (isDatabaseAway(error))
     return new AppError('unavailable', {
-      message: 'The database does not answer. Readings already acknowledged are kept; try again in a minute.',
+      message: problemWords.databaseAway,
       retryAfterS: 10,
     });
   return undefined;
@@ -20,9 +21,9 @@ export function problem(error: unknown, requestId: string): Response {
   const status = known ? ERROR_KINDS[known.kind].status : 500;
   const body = {
     type: `urn:wakeline:problem:${kind}`,
-    title: known ? ERROR_KINDS[known.kind].title : 'Something failed on our side',
+    title: known ? ERROR_KINDS[known.kind].title : problemWords.failedHere,
     status,
-    detail: known?.message ?? `Try again; if it stays, report it with the number ${requestId}.`,
+    detail: known?.message ?? problemWords.tryAgain(requestId),
     fields: known?.detail.fields ?? [],
     ...(known?.detail.current === undefined ? {} : { current: known.detail.current }),
     requestId,

@@ -13,9 +13,11 @@ import { mergeLateFrames } from './late-frames';
 import { nightsDue } from './nights-due';
 import { judgeNight } from './output-night';
 import { packDays } from './pack-days';
+import { forgetSuperseded } from './queue';
 import { recorded, type Done } from './recorded';
 import { rollUpClosed, rollUpDirty } from './roll-up';
 import { tell, tellGathered } from './tell';
+import { jobTitles } from '../../words/jobs-titles';
 
 /**
  * Every kind of background job: what it does, when, and in which queue (jobs of one queue wait for each other). A job
@@ -37,7 +39,7 @@ const ofNight = z.object({ siteId: z.int(), day: z.iso.date() });
 
 const kinds = {
   roll_up: {
-    title: 'Sum reports up to quarters and days',
+    title: jobTitles.sums,
     cron: '* * * * *',
     queue: 'roll_up',
     run: async () => {
@@ -48,19 +50,19 @@ const kinds = {
     },
   },
   causes: {
-    title: 'Find causes at a site when its verdicts change',
+    title: jobTitles.causesOfSite,
     cron: null,
     queue: null,
     run: async (payload) => ({ told: await judgeSiteCauses(ofSite.parse(payload).siteId, new Date()) }),
   },
   causes_sweep: {
-    title: 'Look after every open cause',
+    title: jobTitles.causes,
     cron: '* * * * *',
     queue: 'causes_sweep',
     run: () => judgeAllCauses(() => new Date()),
   },
   nights: {
-    title: 'See where the sun has set and the day can be judged',
+    title: jobTitles.sunsets,
     cron: '*/10 * * * *',
     queue: 'nights',
     run: async (_, helpers) => {
@@ -75,7 +77,7 @@ const kinds = {
     },
   },
   output_night: {
-    title: "Judge a site's day: low output, weak units, wrong strings, resistance",
+    title: jobTitles.judgeDay,
     cron: null,
     queue: null,
     run: async (payload) => {
@@ -84,43 +86,43 @@ const kinds = {
     },
   },
   tell: {
-    title: 'Tell people and other systems of what happened',
+    title: jobTitles.tell,
     cron: '* * * * *',
     queue: 'tell',
     run: () => tell(() => new Date()),
   },
   tell_gathered: {
-    title: 'Write the letters that gather a day or a night',
+    title: jobTitles.gatherLetters,
     cron: '* * * * *',
     queue: 'tell',
     run: () => tellGathered(new Date()),
   },
   send_calls: {
-    title: 'Call other systems',
+    title: jobTitles.callOthers,
     cron: '* * * * *',
     queue: 'calls',
     run: async () => ({ ...(await sendCalls(() => new Date())) }),
   },
   send_letters: {
-    title: 'Send letters that are due',
+    title: jobTitles.sendLetters,
     cron: '* * * * *',
     queue: 'letters',
     run: async () => ({ sent: (await sendDue(() => new Date())).sent }),
   },
   check_cases: {
-    title: 'Look again at closed cases; open those again that did not hold',
+    title: jobTitles.lookAgain,
     cron: '*/10 * * * *',
     queue: 'check_cases',
     run: () => checkClosedCases(new Date()),
   },
   roof_letters: {
-    title: 'Write the weekly and monthly letters about roofs',
+    title: jobTitles.roofLetters,
     cron: '*/10 * * * *',
     queue: 'roof_letters',
     run: () => writeRoofLetters(new Date()),
   },
   keep_days: {
-    title: 'Make room for coming days, give up readings past their time',
+    title: jobTitles.makeRoom,
     cron: '7 * * * *',
     queue: 'keep_days',
     run: async () => {
@@ -131,11 +133,11 @@ const kinds = {
         database('ingest'),
         new Date(now.getTime() - SAMPLES_KEPT_MS),
       );
-      return { dropped, runs, samples };
+      return { dropped, runs, samples, superseded: await forgetSuperseded() };
     },
   },
   pack_days: {
-    title: 'Pack the readings of days that are some days old',
+    title: jobTitles.pack,
     cron: '23 0 * * *',
     queue: 'keep_days',
     run: () => packDays(new Date()),

@@ -6,6 +6,7 @@ import { log } from '../log';
 import { meters } from '../observe/meters';
 import type { Listening } from './round';
 import { snapshotOf, subjectOf, type Subject } from './topics';
+import { liveRefusals } from '../../words/refusals';
 
 /** Bytes that may wait for a reader before it is sent away to come back with its cursors. */
 const WAITING_MAX_BYTES = 4 * 1024 * 1024;
@@ -52,7 +53,7 @@ export class Connection {
     if (ws.readyState !== ws.OPEN) return;
     if (ws.bufferedAmount > WAITING_MAX_BYTES) {
       meters().liveSlow.add();
-      ws.close(CLOSE_COME_BACK, 'too slow: come back with the cursor');
+      ws.close(CLOSE_COME_BACK, liveRefusals.tooSlow);
       return;
     }
     meters().liveSent.add();
@@ -70,7 +71,7 @@ export class Connection {
     if (!parsed.success) {
       const topic =
         typeof value === 'object' && value !== null && 'topic' in value ? String(value.topic) : '';
-      this.send({ type: 'refused', topic: topic.slice(0, 80), reason: 'This is no message of /live.' });
+      this.send({ type: 'refused', topic: topic.slice(0, 80), reason: liveRefusals.noMessage });
       return;
     }
     const message = parsed.data;
@@ -88,7 +89,7 @@ export class Connection {
       this.send({
         type: 'refused',
         topic,
-        reason: `One connection listens to ${TOPICS_MAX} topics at most.`,
+        reason: liveRefusals.tooManyTopics(TOPICS_MAX),
       });
       return;
     }
@@ -108,7 +109,7 @@ export class Connection {
       this.send({ type: kind, topic, cursor, change });
     } catch (error) {
       if (!isDatabaseAway(error)) log.error({ error, topic }, 'a subscription failed');
-      this.ws.close(1013, 'not reachable just now: come back in a moment');
+      this.ws.close(1013, liveRefusals.awayJustNow);
     } finally {
       joined();
     }

@@ -2,6 +2,7 @@ import type { Duplex } from 'node:stream';
 import { STATUS_CODES } from 'node:http';
 import { AppError, ERROR_KINDS, isDatabaseAway } from '../errors';
 import { currentRequest } from '../request';
+import { upgradeFailures } from '../../words/refusals';
 
 /** Answers an upgrade with a plain HTTP refusal that says why, and closes the connection. */
 export function refuseUpgrade(socket: Duplex, error: unknown): void {
@@ -9,14 +10,14 @@ export function refuseUpgrade(socket: Duplex, error: unknown): void {
     error instanceof AppError
       ? error
       : isDatabaseAway(error)
-        ? new AppError('unavailable', { message: 'The database does not answer.', retryAfterS: 10 })
+        ? new AppError('unavailable', { message: upgradeFailures.databaseAway, retryAfterS: 10 })
         : undefined;
   const status = known ? ERROR_KINDS[known.kind].status : 500;
   const body = JSON.stringify({
     type: `urn:wakeline:problem:${known?.kind ?? 'internal'}`,
-    title: known ? ERROR_KINDS[known.kind].title : 'Something failed on our side',
+    title: known ? ERROR_KINDS[known.kind].title : upgradeFailures.failedHere,
     status,
-    detail: known?.message ?? 'Try again in a minute.',
+    detail: known?.message ?? upgradeFailures.tryAgain,
     requestId: currentRequest()?.requestId,
   });
   const lines = [

@@ -16,6 +16,7 @@ import { answersOf } from '../queries/roll-call';
 import { sitesNow } from '../queries/sites-now';
 import { visibleSite } from '../queries/visible-site';
 import { causesNow } from '../services/causes';
+import { topicRefusals } from '../../words/refusals';
 
 /** What a topic is about, in the database's numbers, once the actor was found to be allowed to hear it. */
 export type Subject =
@@ -40,8 +41,8 @@ export const EVENTS_SHOWN = 50;
 /** Who was away for long gets the newest of what was missed, and that some were left out. */
 const EVENTS_MISSED = 500;
 
-export const NOT_FOR_YOU = 'This topic is for the people who look after sites.';
-export const NOT_THERE = 'There is nothing of that name, or it is not open to you.';
+export const NOT_FOR_YOU = topicRefusals.forStaff;
+export const NOT_THERE = topicRefusals.notOpen;
 
 /** The subject of a topic, or why the actor does not get it. */
 export async function subjectOf(topic: string, actor: Actor): Promise<Subject | { refused: string }> {

@@ -6,6 +6,7 @@ import { sameOriginUpgrade } from '../http/origin';
 import { log } from '../log';
 import { refuseUpgrade } from './refuse-upgrade';
 import { liveHub } from './service';
+import { liveUpgradeRefusals } from '../../words/refusals';
 
 /** The upgrade of /live: same origin and a session, before the connection stands. */
 export async function handleLiveUpgrade(req: IncomingMessage, socket: Duplex, head: Buffer): Promise<void> {
@@ -13,13 +14,13 @@ export async function handleLiveUpgrade(req: IncomingMessage, socket: Duplex, he
   socket.on('error', onError);
   try {
     if (!sameOriginUpgrade(req.headers))
-      throw new AppError('forbidden', { message: 'Live data is for pages of this site only.' });
+      throw new AppError('forbidden', { message: liveUpgradeRefusals.ownPagesOnly });
     const hub = liveHub();
     if (!hub)
-      throw new AppError('unavailable', { message: 'This process serves no pages.', retryAfterS: 10 });
+      throw new AppError('unavailable', { message: liveUpgradeRefusals.noPagesHere, retryAfterS: 10 });
     const cookie = req.headers.cookie ?? '';
     const found = await actorOfCookie(cookie);
-    if (!found) throw new AppError('unauthenticated', { message: 'Sign in, then reload the page.' });
+    if (!found) throw new AppError('unauthenticated', { message: liveUpgradeRefusals.signIn });
     if (socket.destroyed) return;
     socket.off('error', onError);
     hub.wss.handleUpgrade(req, socket, head, (ws) => hub.accept(ws, found.actor, cookie));

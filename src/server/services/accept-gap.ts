@@ -8,6 +8,7 @@ import { commissioningFacts } from '../queries/commissioning-facts';
 import { tellSiteChanged } from '../queries/live-notices';
 import { addAuditEntry } from '../queries/people';
 import { visibleSite } from '../queries/visible-site';
+import { acceptGapRefusals } from '../../words/refusals-as-built';
 
 /**
  * A manager lets a point stand open, by name and with a reason. It stays in view and goes into the pack.
@@ -26,10 +27,9 @@ export async function acceptGap(
   const gap = step?.gaps.find((g) => g.key === key);
   if (!step || !gap)
     throw new AppError('conflict', {
-      message: 'This point has been settled or has changed meanwhile. Reload the page to see how it stands.',
+      message: acceptGapRefusals.settledMeanwhile,
     });
-  if (gap.accepted)
-    throw new AppError('conflict', { message: 'Somebody has accepted this point already. Reload the page.' });
+  if (gap.accepted) throw new AppError('conflict', { message: acceptGapRefusals.acceptedAlready });
   await addAcceptedGap(tx, {
     siteId: site.id,
     step: step.key,

@@ -9,6 +9,7 @@ import { addAuditEntry } from '../queries/people';
 import { openHazard, takeOnHazards } from '../queries/causes-list';
 import { visibleSite, type VisibleSite } from '../queries/visible-site';
 import { causesNow } from './causes';
+import { acknowledgeRefusals } from '../../words/refusals-cases';
 
 export interface AcknowledgeCall {
   site: string;
@@ -30,17 +31,15 @@ export async function acknowledge(
   at: Date,
 ): Promise<AcknowledgeReply> {
   const site = await visibleSite(tx, call.site);
-  if (!site)
-    throw new AppError('not_found', { message: 'No such site. Check the link, or go back to the fleet.' });
+  if (!site) throw new AppError('not_found', { message: acknowledgeRefusals.noSuchSite });
   const now = await causesNow(tx, at, [site.id]);
   const cause = now.find((c) => c.key === call.key) ?? (await storedHazard(tx, site, call.key));
   if (!cause)
     throw new AppError('conflict', {
-      message: 'This has ended or changed meanwhile. Load the page again to see how it stands.',
+      message: acknowledgeRefusals.endedMeanwhile,
     });
   const contact = (await contactsOf(tx, [site.id]))[0];
-  if (!contact)
-    throw new AppError('not_found', { message: 'No such site. Check the link, or go back to the fleet.' });
+  if (!contact) throw new AppError('not_found', { message: acknowledgeRefusals.noSuchSite });
   const already = (await acknowledgementsOf(tx, [cause]))[0];
   if (already) return { acknowledgement: already, contact };
 

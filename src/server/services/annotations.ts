@@ -7,6 +7,7 @@ import { tellSiteChanged } from '../queries/live-notices';
 import { addAuditEntry } from '../queries/people';
 import { stringFacts } from '../queries/string-facts';
 import { visibleSite } from '../queries/visible-site';
+import { annotationRefusals } from '../../words/refusals-cases';
 
 /** Notes pinned on the time axis. */
 
@@ -18,7 +19,7 @@ export interface From {
 async function stringOf(tx: Tx, siteRef: string, ref: string): Promise<{ id: number; name: string }> {
   const facts = await stringFacts(tx, ref);
   if (!facts || facts.siteRef !== siteRef)
-    throw new AppError('not_found', { message: 'No such string at this site.' });
+    throw new AppError('not_found', { message: annotationRefusals.noSuchString });
   return facts;
 }
 
@@ -56,10 +57,8 @@ export async function pinAnnotation(
   const to = note.to === null ? null : new Date(note.to);
   if (from.getTime() > by.at.getTime() + DAY_MS)
     throw new AppError('invalid', {
-      message: 'A note is about what was. For what is to come, enter a planned work.',
-      fields: [
-        { field: 'from', message: 'This lies in the future. For what is to come, enter a planned work.' },
-      ],
+      message: annotationRefusals.aboutWhatWas,
+      fields: [{ field: 'from', message: annotationRefusals.inTheFuture }],
     });
   const fresh = await addAnnotation(tx, {
     ref: note.ref,
@@ -71,7 +70,7 @@ export async function pinAnnotation(
     personId: actor.personId,
   });
   const kept = await annotationOfSite(tx, site.id, note.ref);
-  if (!kept) throw new AppError('conflict', { message: 'A note with this reference is another site’s.' });
+  if (!kept) throw new AppError('conflict', { message: annotationRefusals.anotherSites });
   if (fresh) {
     await addAuditEntry(tx, {
       organisationId: actor.organisationId,

@@ -10,6 +10,7 @@ import { addToken, endTokens, tokensOf, type TokenRow } from '../queries/api-tok
 import { addAuditEntry } from '../queries/people';
 import { siteChoices } from '../queries/site';
 import type { Caller } from './my-account';
+import { apiTokenRefusals } from '../../words/refusals-people';
 
 type Maker = Pick<Caller, 'actor' | 'address'>;
 
@@ -43,8 +44,7 @@ const wrong = (field: string, message: string): AppError =>
 async function numbersOf(tx: Tx, sites: readonly string[]): Promise<number[] | null> {
   if (sites.length === 0) return null;
   const known = await siteNumbers(tx, sites);
-  if (sites.some((ref) => !known.has(ref)))
-    throw wrong('sites', 'One of the sites is not among yours. Reload the page and choose again.');
+  if (sites.some((ref) => !known.has(ref))) throw wrong('sites', apiTokenRefusals.notYourSite);
   return [...known.values()];
 }
 
@@ -58,16 +58,15 @@ export async function makeToken(tx: Tx, caller: Maker, body: MakeToken, at: Date
     await confirmPassword(actor.personId, body.current);
   } catch (error) {
     if (error instanceof AppError && error.kind === 'invalid')
-      throw wrong('current', 'This is not your password. No token was made.');
+      throw wrong('current', apiTokenRefusals.wrongPassword);
     throw error;
   }
   const before = await tokensOf(tx, actor.personId);
   if (before.filter((t) => t.expiresAt > at).length >= TOKENS_MAX)
     throw new AppError('conflict', {
-      message: `You have ${TOKENS_MAX} tokens in force. End one that you don’t use any more first.`,
+      message: apiTokenRefusals.tooMany(TOKENS_MAX),
     });
-  if (before.some((t) => t.name === body.name))
-    throw wrong('name', 'A token of yours has this name. Choose another, so that you can tell them apart.');
+  if (before.some((t) => t.name === body.name)) throw wrong('name', apiTokenRefusals.nameTaken);
   const token = newApiToken();
   const expiresAt = new Date(at.getTime() + body.days * DAY_MS);
   const ref = await addToken(tx, {

@@ -11,6 +11,7 @@ import { addPart } from './edit-as-built';
 import { addStrings, setSlotFacts } from './edit-as-built-strings';
 import { makeLoggerToken, newToken } from './logger-token';
 import { placeUnits, type Placed } from './place-units';
+import { asBuiltRequestRefusals } from '../../words/refusals-as-built';
 
 /** What the as-built's forms ask for, put together from the services. */
 
@@ -66,7 +67,7 @@ async function inputsFrom(
   if (from < 0) return []; // the check of the string says so
   const inputs = all.slice(from, from + count);
   if (inputs.length < count) {
-    const message = `Inverter input: from this one on there are ${inputs.length} inputs, not ${count}. Choose an earlier one, or put them all on one.`;
+    const message = asBuiltRequestRefusals.tooFewInputs(inputs.length, count);
     throw new AppError('invalid', { message, fields: [{ field: 'values.input', message }] });
   }
   return inputs;

@@ -1,36 +1,36 @@
 import { AppError, type FieldFault } from '../errors';
 import type { Hanging } from '../queries/as-built-records';
+import { asBuiltRefusals } from '../../words/refusals-as-built';
 
 /** What the database says of a change that it refuses, in words, at the field. */
 const CONSTRAINTS: Record<string, { key: string; message: string }> = {
   site_organisation_id_name_key: {
     key: 'name',
-    message: 'Another site of yours has this name. Choose one that tells them apart.',
+    message: asBuiltRefusals.siteNameTaken,
   },
-  plane_site_id_name_key: { key: 'name', message: 'Another plane here has this name.' },
-  inverter_site_id_name_key: { key: 'name', message: 'Another inverter here has this name.' },
-  initiator_site_id_name_key: { key: 'name', message: 'Another initiator here has this name.' },
-  zone_site_id_name_key: { key: 'name', message: 'Another zone here has this name.' },
-  transmitter_site_id_name_key: { key: 'name', message: 'Another transmitter here has this name.' },
-  string_site_id_name_key: { key: 'name', message: 'Another string here has this name.' },
+  plane_site_id_name_key: { key: 'name', message: asBuiltRefusals.planeNameTaken },
+  inverter_site_id_name_key: { key: 'name', message: asBuiltRefusals.inverterNameTaken },
+  initiator_site_id_name_key: { key: 'name', message: asBuiltRefusals.initiatorNameTaken },
+  zone_site_id_name_key: { key: 'name', message: asBuiltRefusals.zoneNameTaken },
+  transmitter_site_id_name_key: { key: 'name', message: asBuiltRefusals.transmitterNameTaken },
+  string_site_id_name_key: { key: 'name', message: asBuiltRefusals.stringNameTaken },
   logger_serial_key: {
     key: 'serial',
-    message:
-      'A logger with this serial is on record already. Look at the label; if it is right, ask whoever runs this installation.',
+    message: asBuiltRefusals.loggerOnRecord,
   },
-  sensor_logger_id_number_key: { key: 'number', message: 'This logger has a sensor with this number.' },
+  sensor_logger_id_number_key: { key: 'number', message: asBuiltRefusals.sensorNumberTaken },
   placement_one_place_at_a_time: {
     key: 'changes',
-    message: 'One of these serials was placed elsewhere at this moment. Nothing was changed; look again.',
+    message: asBuiltRefusals.serialPlacedElsewhere,
   },
   placement_one_unit_at_a_time: {
     key: 'changes',
-    message: 'One of these slots was filled at this moment. Nothing was changed; look again.',
+    message: asBuiltRefusals.slotFilled,
   },
-  string_monitored_has_logger: { key: 'logger', message: 'Units that report need a logger. Choose one.' },
+  string_monitored_has_logger: { key: 'logger', message: asBuiltRefusals.chooseLogger },
   string_shutdown_only_names_transmitters: {
     key: 'transmitters',
-    message: 'Shutdown-only units need a transmitter. Choose at least one that the string hears.',
+    message: asBuiltRefusals.chooseTransmitter,
   },
 };
 
@@ -54,7 +54,7 @@ export async function inWords<T>(prefix: string, work: () => Promise<T>): Promis
       });
     if (code === '23503')
       throw new AppError('conflict', {
-        message: `Records hang on this, or somebody changed it at this moment${table ? ` (${table.replaceAll('_', ' ')})` : ''}. Reload the page and look again.`,
+        message: asBuiltRefusals.recordsHang(table ? table.replaceAll('_', ' ') : ''),
       });
     throw error;
   }
@@ -76,8 +76,15 @@ const listed = (names: readonly string[]): string =>
 /** Why a part can't go, and what to do; null: it can. */
 export function hangingWords(part: string, { parts, records }: Hanging): string | null {
   if (records.length > 0)
-    return `${part} stays: ${records.map((r) => plural(r.count, r.what)).join(', ')} hang${records.length === 1 && records[0]?.count === 1 ? 's' : ''} on it. Rename it, or leave it as it is.`;
+    return asBuiltRefusals.partStays(
+      part,
+      records.map((r) => plural(r.count, r.what)).join(', '),
+      records.length === 1 && records[0]?.count === 1,
+    );
   if (parts.length > 0)
-    return `${part} is in use by ${parts.map((p) => `${p.names.length === 1 ? p.what : `${p.what}s`} ${listed(p.names)}`).join(' and ')}. Change those first.`;
+    return asBuiltRefusals.partInUse(
+      part,
+      parts.map((p) => asBuiltRefusals.partsNamed(p.what, p.names.length, listed(p.names))),
+    );
   return null;
 }

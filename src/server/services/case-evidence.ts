@@ -19,6 +19,7 @@ import { fingerprintOf } from '../reports/fingerprint';
 import { packData } from '../reports/handover/data';
 import { casePage } from './cases';
 import { readHistory } from './string-history';
+import { caseEvidenceWords } from '../../words/refusals-cases';
 
 const PHOTOS_SHOWN = 60;
 const DAY_MS = 86_400_000;
@@ -98,8 +99,8 @@ async function drawingsOf(data: Evidence) {
   return {
     before: await draw(figures(data.case.before), staircaseDrawing),
     after: await draw(figures(data.case.after), staircaseDrawing),
-    day: await draw(shown, (s) => historyDrawing(s.day, `Volts of ${s.name}`)),
-    week: await draw(shown, (s) => historyDrawing(s.week, `Watts of ${s.name}`)),
+    day: await draw(shown, (s) => historyDrawing(s.day, caseEvidenceWords.voltsOf(s.name))),
+    week: await draw(shown, (s) => historyDrawing(s.week, caseEvidenceWords.watts(s.name))),
   };
 }
 

@@ -14,6 +14,7 @@ import { casesOf, caseWithFigures, entriesOf, photosOf, siteOfString, stringChoi
 import { causeForCase, openCaseOfCause, staffOf } from '../queries/cases-write';
 import { siteChoices } from '../queries/site';
 import { visibleSite } from '../queries/visible-site';
+import { caseWords } from '../../words/refusals-cases';
 
 const named = (people: readonly { ref: string; name: string }[]) =>
   people.map((p) => ({ id: p.ref, name: p.name }));
@@ -105,7 +106,7 @@ export async function caseDraft(tx: Tx, from: DraftFrom, at: Date): Promise<Case
 async function draftOfCause(tx: Tx, ref: string, blank: CaseDraft): Promise<CaseDraft> {
   const cause = found(await causeForCase(tx, ref), 'cause');
   const existing = await openCaseOfCause(tx, cause.id);
-  const also = cause.alternatives.length > 0 ? `\nIt could also be: ${cause.alternatives.join('; ')}.` : '';
+  const also = cause.alternatives.length > 0 ? caseWords.couldAlsoBe(cause.alternatives.join('; ')) : '';
   return {
     ...blank,
     site: cause.siteRef,

@@ -5,6 +5,7 @@ import { countAtStart, listed } from '../../drawings/numbers';
 import type { CauseNow } from '../../schemas/api/now';
 import type { Tx } from '../db/transaction';
 import { causeSites, type CauseSiteRow, type CauseStringRow } from '../queries/causes';
+import { causeWords } from '../../words/refusals-cases';
 
 const iso = (atS: number): string => new Date(atS * 1000).toISOString();
 
@@ -24,6 +25,9 @@ function slotsOf(string: CauseStringRow, gateways: ReadonlyMap<string, string>):
     };
   });
 }
+
+/** A unit is silent after three report intervals: an input's reading is of now while it is newer than that. */
+const FRESH_INTERVALS = 3;
 
 /** A site's rows as the search for causes takes them. */
 export function conditionOf(row: CauseSiteRow, at: Date): SiteCondition {
@@ -64,16 +68,22 @@ export function conditionOf(row: CauseSiteRow, at: Date): SiteCondition {
     inputs: row.inputs.map((i) => ({
       inverter: i.inverter,
       number: i.number,
-      currentA: i.current === null ? null : i.current / 100,
+      // what was measured before the units fell silent says nothing of what flows now
+      currentA:
+        i.current === null ||
+        i.atS === null ||
+        atS - i.atS >= FRESH_INTERVALS * Math.max(60, row.reportIntervalS)
+          ? null
+          : i.current / 100,
     })),
   };
 }
 
 const DO: Record<Cause['verdict'], string> = {
-  not_shutting_down: 'do not shut down',
-  stuck: 'are stuck in shutdown',
-  unconfirmed: 'have not shown that they shut down',
-  silent: 'are silent',
+  not_shutting_down: causeWords.doNotShutDown,
+  stuck: causeWords.areStuck,
+  unconfirmed: causeWords.haveNotShown,
+  silent: causeWords.areSilent,
 };
 
 /**
@@ -101,7 +111,7 @@ export function together(causes: readonly Cause[]): Cause[] {
       sinceS: Math.min(...singles.map((c) => c.sinceS)),
       sharedPart: null,
       headline: `${countAtStart(singles.length)} units ${DO[verdict]}`,
-      evidence: `Each stands alone in ${strings.length > 4 ? `${strings.length} strings` : listed(strings)}: no part that they share explains them.`,
+      evidence: causeWords.eachAlone(strings.length, listed(strings)),
       alternatives: [...new Set(singles.flatMap((c) => c.alternatives))],
       confidence: Math.min(...singles.map((c) => c.confidence)),
       units: singles.flatMap((c) => c.units),

@@ -21,6 +21,7 @@ import { tellSiteChanged } from '../queries/live-notices';
 import { addAuditEntry, findPersonName } from '../queries/people';
 import { casePage } from './cases';
 import { partsOf, personAmong } from './open-case';
+import { changeCaseRefusals } from '../../words/refusals-cases';
 
 type Facts = Extract<CaseChangeBody, { act: 'facts' }>;
 type ToState = Extract<CaseChangeBody, { act: 'state' }>;
@@ -66,7 +67,7 @@ async function meanwhile({ tx, actor, at }: Changer, kept: LockedCase, seen: num
   );
   const who = [...new Set(since.map((e) => e.person ?? 'Wakeline'))].join(' and ');
   return new AppError('conflict', {
-    message: `${who || 'Somebody'} changed this case meanwhile. Look at what changed, then send yours again or leave it.`,
+    message: changeCaseRefusals.changedMeanwhile(who),
     current: { page, since },
   });
 }
@@ -128,7 +129,7 @@ async function changeFacts(by: Changer, kept: LockedCase, body: Facts): Promise<
   }
   if (body.what !== undefined && body.what !== kept.what) {
     change.what = body.what;
-    says('what is wrong', kept.what, body.what);
+    says(changeCaseRefusals.whatIsWrong, kept.what, body.what);
   }
   if (body.kind !== undefined && body.kind !== kept.kind) {
     change.kind = body.kind;
@@ -136,7 +137,7 @@ async function changeFacts(by: Changer, kept: LockedCase, body: Facts): Promise<
   }
   if (body.dueOn !== undefined && body.dueOn !== kept.dueOn) {
     change.dueOn = body.dueOn;
-    says('due', kept.dueOn ?? 'no day', body.dueOn ?? 'no day');
+    says('due', kept.dueOn ?? changeCaseRefusals.noDay, body.dueOn ?? changeCaseRefusals.noDay);
   }
   let assigned: { id: number; name: string } | null = null;
   if (body.assignee !== undefined) {
@@ -145,7 +146,7 @@ async function changeFacts(by: Changer, kept: LockedCase, body: Facts): Promise<
     if ((to?.id ?? null) !== kept.assigneeId) {
       change.assigneeId = to?.id ?? null;
       const from = kept.assigneeId === null ? 'nobody' : ((await findPersonName(tx, kept.assigneeId)) ?? '');
-      says('assigned to', from, to?.name ?? 'nobody');
+      says(changeCaseRefusals.assignedTo, from, to?.name ?? 'nobody');
       assigned = to;
     }
   }
@@ -188,7 +189,7 @@ async function changeState(by: Changer, kept: LockedCase, body: ToState): Promis
   if (body.state === kept.state) return;
   const closing = isClosed(body.state);
   if (closing && body.note.trim() === '') {
-    const message = 'Say what was done or found, so that the next person need not ask.';
+    const message = changeCaseRefusals.sayWhatWasDone;
     throw new AppError('invalid', { message, fields: [{ field: 'body.note', message }] });
   }
   const reopening = isClosed(kept.state) && !closing;
@@ -213,7 +214,7 @@ async function changeState(by: Changer, kept: LockedCase, body: ToState): Promis
   if (closing) await tell(by, kept, 'case_closed', { state: body.state, assigneeId: kept.assigneeId });
   else if (reopening)
     await tell(by, kept, 'case_reopened', {
-      reason: body.note || `${by.person} opened it again.`,
+      reason: body.note || changeCaseRefusals.openedAgain(by.person),
       assigneeId: kept.assigneeId,
     });
   await audit(
@@ -227,11 +228,11 @@ async function changeState(by: Changer, kept: LockedCase, body: ToState): Promis
 
 async function checkLine(by: Changer, kept: LockedCase, body: Check): Promise<void> {
   const { tx, at, actor, person } = by;
-  const item = found(checklistItem(body.key), 'line of the checklist');
+  const item = found(checklistItem(body.key), changeCaseRefusals.checklistLine);
   const mark = kept.checklist.find((m) => m.key === body.key);
   if ((mark?.at ?? null) !== body.seen)
     throw new AppError('conflict', {
-      message: `${mark?.by ?? 'Somebody'} changed this line meanwhile: ${mark?.done ? 'it is done' : 'it is open'}. Look at it, then send yours again.`,
+      message: changeCaseRefusals.lineChanged(mark?.by ?? '', mark?.done === true),
       current: { page: await casePage(tx, actor, kept.ref, at), since: [] },
     });
   const next = { key: body.key, done: body.done, by: person, at: at.toISOString(), note: body.note };

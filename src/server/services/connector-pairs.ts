@@ -7,6 +7,7 @@ import { endPair, insertPair } from '../queries/connector-pairs';
 import { connectorTypes } from '../queries/equipment';
 import { addAuditEntry } from '../queries/people';
 import { tellSitesUsing } from './equipment-save';
+import { connectorPairRefusals } from '../../words/refusals-as-built';
 
 /**
  * Records that two different connector types are documented as intermatable.
@@ -23,15 +24,15 @@ export async function recordPair(
     const type = types.find((t) => t.id === input[field]);
     if (type) return type;
     throw new AppError('invalid', {
-      message: 'Choose both connector types from the list.',
-      fields: [{ field, message: 'Choose a type from the list; that one is gone.' }],
+      message: connectorPairRefusals.chooseBoth,
+      fields: [{ field, message: connectorPairRefusals.typeGone }],
     });
   };
   const [first, second] = [of('first'), of('second')];
   if (isIdenticalConnector(first, second))
     throw new AppError('invalid', {
-      message: 'These are one maker’s one type: they need no evidence.',
-      fields: [{ field: 'second', message: 'Choose a type that differs from the first.' }],
+      message: connectorPairRefusals.sameType,
+      fields: [{ field: 'second', message: connectorPairRefusals.chooseOther }],
     });
   const evidence = [
     `${input.document}, ${input.edition}, ${input.page}`,
@@ -46,7 +47,7 @@ export async function recordPair(
   });
   if (!id)
     throw new AppError('conflict', {
-      message: `${first.name} and ${second.name} are recorded already. End that record first if the document has changed.`,
+      message: connectorPairRefusals.recordedAlready(first.name, second.name),
     });
   await addAuditEntry(tx, {
     organisationId: actor.organisationId,

@@ -6,10 +6,11 @@ import { insertPart, insertSite } from '../queries/as-built-parts';
 import { addAuditEntry } from '../queries/people';
 import { inWords, refuseFaults } from './as-built-words';
 import { faultsAt, tellAll } from './edit-as-built';
+import { newSiteNames } from '../../words/refusals-as-built';
 
 /** What a new site begins with, so that strings have a zone to be in. */
-export const FIRST_INITIATOR = 'Main initiator';
-export const FIRST_ZONE = 'Whole site';
+export const FIRST_INITIATOR = newSiteNames.mainInitiator;
+export const FIRST_ZONE = newSiteNames.wholeSite;
 
 /**
  * A new site in the stage commissioning, with one initiator at the shutdown switch and one zone for the whole of it.

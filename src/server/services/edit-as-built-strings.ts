@@ -20,6 +20,7 @@ import { addAuditEntries } from '../queries/people';
 import { inWords, refuseFaults } from './as-built-words';
 import { faultsAt, inNames, needReason, standing, tellAll, unknownNames, type How } from './edit-as-built';
 import { stringFaults } from './write-part';
+import { editStringsRefusals } from '../../words/refusals-as-built';
 
 /** Strings and slots, any number at once. Parts are named by their public identifiers. */
 
@@ -69,12 +70,12 @@ export async function addStrings(
     const { values } = result;
     const name = String(values.name);
     if (taken.has(name))
-      faults.push({ field: `${fieldOf(n)}name`, message: `There is a string ${name} already.` });
+      faults.push({ field: `${fieldOf(n)}name`, message: editStringsRefusals.nameTaken(name) });
     else if (names.has(name))
-      faults.push({ field: `${fieldOf(n)}name`, message: `Two new strings are called ${name}.` });
+      faults.push({ field: `${fieldOf(n)}name`, message: editStringsRefusals.nameTwice(name) });
     names.set(name, n);
     if (values.moduleType === null)
-      faults.push({ field: `${fieldOf(n)}moduleType`, message: 'Choose the module type.' });
+      faults.push({ field: `${fieldOf(n)}moduleType`, message: editStringsRefusals.chooseModuleType });
     faults.push(
       ...faultsAt(fieldOf(n), unknownNames(parts, 'string', values)),
       ...faultsAt(fieldOf(n), stringFaults(parts, values)),
@@ -98,7 +99,7 @@ export async function addStrings(
     const number = numbers.get(String(value));
     if (number === undefined)
       throw new AppError('conflict', {
-        message: 'A part was deleted at this moment. Reload, then try again.',
+        message: editStringsRefusals.partDeleted,
       });
     return number;
   };
@@ -187,7 +188,7 @@ export async function setSlotFacts(
     if (!now) {
       faults.push({
         field: `slots.${n}`,
-        message: `There is no position ${change.position} in this string.`,
+        message: editStringsRefusals.noPosition(change.position),
       });
       return;
     }
@@ -195,12 +196,12 @@ export async function setSlotFacts(
     if (change.moduleType !== undefined && moduleTypeId === undefined)
       faults.push({
         field: `slots.${n}.moduleType`,
-        message: 'This module type is not in the catalogue any more.',
+        message: editStringsRefusals.moduleTypeGone,
       });
     for (const key of ['roofX', 'roofY'] as const) {
       const value = change[key];
       if (typeof value === 'number' && !(value >= -2000 && value <= 2000))
-        faults.push({ field: `slots.${n}.${key}`, message: 'Give metres from −2000 to 2000.' });
+        faults.push({ field: `slots.${n}.${key}`, message: editStringsRefusals.giveMetres });
     }
     const row: SlotFactsRow = {
       string: change.string,
@@ -285,13 +286,13 @@ export async function setSlotCounts(
     const stringId = string && (await partNumber(tx, 'string', siteId, count.string));
     const moduleTypeId = types.get(count.moduleType);
     if (!string || stringId === undefined)
-      faults.push({ field: `counts.${n}.string`, message: 'This string is not there any more.' });
+      faults.push({ field: `counts.${n}.string`, message: editStringsRefusals.stringGone });
     else if (!Number.isInteger(count.slots) || count.slots < 1 || count.slots > 63)
-      faults.push({ field: `counts.${n}.slots`, message: `${string.name}: a string has 1 to 63 slots.` });
+      faults.push({ field: `counts.${n}.slots`, message: editStringsRefusals.slotsRange(string.name) });
     else if (moduleTypeId === undefined)
       faults.push({
         field: `counts.${n}.moduleType`,
-        message: 'This module type is not in the catalogue any more.',
+        message: editStringsRefusals.moduleTypeGone,
       });
     else if (string.slots.length !== count.slots)
       rows.push({
@@ -310,7 +311,7 @@ export async function setSlotCounts(
     const row = rows.find((r) => r.stringId === used.stringId);
     faults.push({
       field: `counts.${row?.n ?? 0}.slots`,
-      message: `${slotName(row?.name ?? '', used.position)} can't go: ${used.serial === null ? 'a unit there has reported' : `${used.serial} sits there`}.`,
+      message: editStringsRefusals.slotStays(slotName(row?.name ?? '', used.position), used.serial),
     });
   }
   refuseFaults(faults);

@@ -15,6 +15,8 @@ import { addAuditEntry } from '../queries/people';
 import { lockAsBuilt } from '../queries/placements';
 import { hangingWords, inWords, refuseFaults } from './as-built-words';
 import { columnsOf, writeChanges, writeNew } from './write-part';
+import { LOCALE } from '../../words/language';
+import { editPartRefusals } from '../../words/refusals-as-built';
 
 /** How a change came in. */
 export interface How {
@@ -72,7 +74,7 @@ export function unknownNames(
     const ids = Array.isArray(value) ? (value as readonly string[]) : value === null ? [] : [String(value)];
     return ids.every((id) => nameOf(parts, field.of, id) !== undefined)
       ? []
-      : [{ key, message: `${field.label}: this one is not there any more. Choose from the list again.` }];
+      : [{ key, message: editPartRefusals.choiceGone(field.label) }];
   });
 }
 
@@ -86,8 +88,8 @@ export const faultsAt = (
 export function needReason(needed: boolean, how: How): void {
   if (needed && how.reason.trim() === '')
     throw new AppError('invalid', {
-      message: 'Say why: the site is operating, or units that are placed are concerned.',
-      fields: [{ field: 'reason', message: 'Say why, in a few words. It stays in the history.' }],
+      message: editPartRefusals.sayWhy,
+      fields: [{ field: 'reason', message: editPartRefusals.sayWhyShort }],
     });
 }
 
@@ -161,7 +163,7 @@ export async function changePart(
       merged.clashes.map((c) => c.key),
     );
     throw new AppError('conflict', {
-      message: `Somebody changed this ${PART_WORDS[kind].one} while you were editing it. What you typed is kept: compare and save again.`,
+      message: editPartRefusals.changedMeanwhile(PART_WORDS[kind].one),
       fields: merged.clashes.map((c) => ({
         field: `values.${c.key}`,
         message: clashWords(parts, kind, c.key, c.theirs, who.get(c.key), site.timeZone),
@@ -199,9 +201,9 @@ export async function changePart(
 
 async function goneError(tx: Tx, siteId: number, kind: PartKind, subject: string): Promise<AppError> {
   const by = await deletedBy(tx, siteId, subject);
-  if (!by) return new AppError('not_found', { message: `No such ${PART_WORDS[kind].one} at this site.` });
+  if (!by) return new AppError('not_found', { message: editPartRefusals.noSuchPart(PART_WORDS[kind].one) });
   return new AppError('conflict', {
-    message: `${by.name} has deleted this ${PART_WORDS[kind].one} while you were editing it. What you typed is still here: add it anew, or close.`,
+    message: editPartRefusals.deletedMeanwhile(by.name, PART_WORDS[kind].one),
   });
 }
 
@@ -228,8 +230,12 @@ function clashWords(
             : 'no'
           : `"${String(named)}"`);
   const by = who
-    ? `${who.name} set it to ${shown} at ${new Intl.DateTimeFormat('en-GB', { timeZone, hour: '2-digit', minute: '2-digit' }).format(who.at)}`
-    : `it is ${shown} now`;
+    ? editPartRefusals.wasSet(
+        who.name,
+        shown,
+        new Intl.DateTimeFormat(LOCALE, { timeZone, hour: '2-digit', minute: '2-digit' }).format(who.at),
+      )
+    : editPartRefusals.isNow(shown);
   return `${field?.label ?? key}: ${by}.`;
 }
 
@@ -249,7 +255,7 @@ export async function removePart(
   const now = partOf(parts, kind, id);
   const rowId = now && (await partNumber(tx, kind, siteId, id));
   if (!now || rowId === undefined)
-    throw new AppError('not_found', { message: `This ${PART_WORDS[kind].one} is not there any more.` });
+    throw new AppError('not_found', { message: editPartRefusals.partGone(PART_WORDS[kind].one) });
   const label = labelOf(parts, kind, now);
   const words = hangingWords(label, await hangingOn(tx, kind, rowId));
   if (words !== null) throw new AppError('conflict', { message: words });

@@ -10,6 +10,7 @@ import type { Tx } from '../db/transaction';
 import { AppError } from '../errors';
 import { catalogueRows, connectorTypes, type CatalogueRow } from '../queries/equipment';
 import { writeChange, writeNew } from './equipment-save';
+import { equipmentImportRefusals } from '../../words/refusals-as-built';
 
 const MOST_ROWS = 2000;
 
@@ -27,21 +28,20 @@ function rowsOf(text: string): { row: number; cells: string[] }[] {
   const quotes = parsed.errors.find((e) => e.type === 'Quotes');
   if (quotes)
     throw new AppError('invalid', {
-      message: `Row ${(quotes.row ?? 0) + 1} has a quotation mark that is never closed, or one in the middle of a cell. Correct it, or write it twice.`,
-      fields: [{ field: 'text', message: `Row ${(quotes.row ?? 0) + 1}: quotation marks don’t pair up.` }],
+      message: equipmentImportRefusals.openQuote((quotes.row ?? 0) + 1),
+      fields: [{ field: 'text', message: equipmentImportRefusals.unpairedQuotes((quotes.row ?? 0) + 1) }],
     });
   const rows = parsed.data
     .map((cells, i) => ({ row: i + 1, cells }))
     .filter(({ cells }) => cells.some((c) => c.trim() !== ''));
   if (rows.length > MOST_ROWS + 1)
     throw new AppError('too_large', {
-      message: `The file has ${rows.length - 1} rows. Import at most ${MOST_ROWS} at once.`,
+      message: equipmentImportRefusals.tooManyRows(rows.length - 1, MOST_ROWS),
     });
   if (rows.length < 2)
     throw new AppError('invalid', {
-      message:
-        'There is no row under the header. The first row names the columns, each further row is one type.',
-      fields: [{ field: 'text', message: 'Add at least one row under the header.' }],
+      message: equipmentImportRefusals.noRow,
+      fields: [{ field: 'text', message: equipmentImportRefusals.addRow }],
     });
   return rows;
 }
@@ -81,8 +81,8 @@ async function plan(
             faults.push({
               column: 'Name',
               typed: name,
-              why: `Row ${first} has the same name.`,
-              remedy: 'Keep one of the two, or give it another name.',
+              why: equipmentImportRefusals.sameName(first),
+              remedy: equipmentImportRefusals.keepOne,
             });
           else seen.set(lower(name), row);
           return judged(family, { row, name, before, read: { ...read, faults } }, around.connectorNames);
@@ -136,15 +136,15 @@ function judged(
         column: fieldOf(c.field)?.label ?? c.field,
         typed: written(c.field, entry),
         why: c.message,
-        remedy: 'Correct this value, or the one that it is held against.',
+        remedy: equipmentImportRefusals.correctValue,
       });
     doubts.push(...found.doubts.map((d) => d.message));
     if (family === 'units' && before && before.strings > 0 && before.entry.kind !== entry.kind)
       faults.push({
         column: 'Kind',
         typed: written('kind', entry),
-        why: `${before.strings} strings rest on this type’s kind.`,
-        remedy: 'Give the row another name: a new type.',
+        why: equipmentImportRefusals.stringsRest(before.strings),
+        remedy: equipmentImportRefusals.giveAnotherName,
       });
   }
   const changes = before
@@ -178,12 +178,12 @@ export async function importTypes(
   if (input.confirm === undefined) return { ...preview, imported: false };
   if (input.confirm !== preview.fingerprint)
     throw new AppError('conflict', {
-      message: 'The catalogue has changed since the preview was made. Look at the new preview, then import.',
+      message: equipmentImportRefusals.catalogueChanged,
     });
   if (preview.headerFaults.length > 0 || preview.counts.faulty > 0)
     throw new AppError('invalid', {
-      message: 'Nothing was imported: correct the marked cells first.',
-      fields: [{ field: 'text', message: `${preview.counts.faulty} rows have faults.` }],
+      message: equipmentImportRefusals.nothingImported,
+      fields: [{ field: 'text', message: equipmentImportRefusals.rowsHaveFaults(preview.counts.faulty) }],
     });
   for (const { shown, entry, before } of planned) {
     if (before && shown.outcome === 'changed')

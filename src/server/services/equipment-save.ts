@@ -20,6 +20,7 @@ import {
 import { tellAsBuiltChanged, tellSiteChanged } from '../queries/live-notices';
 import { addAuditEntry } from '../queries/people';
 import { readType, subjectOf } from './equipment';
+import { equipmentSaveRefusals } from '../../words/refusals-as-built';
 
 const invalid = (fields: FieldFault[]): AppError =>
   new AppError('invalid', { message: fields.map((f) => f.message).join(' '), fields });
@@ -42,7 +43,7 @@ function clashes(
     ? [
         {
           field: 'name',
-          message: `Name: "${String(twin.entry.name)}" is there already${twin.archivedAt ? ', archived' : ''}. Choose another name${twin.archivedAt ? ', or restore that one' : ''}.`,
+          message: equipmentSaveRefusals.nameTaken(String(twin.entry.name), twin.archivedAt !== null),
         },
       ]
     : [];
@@ -54,10 +55,10 @@ function clashes(
     if (archived === undefined)
       faults.push({
         field: field.key,
-        message: `${field.label}: choose one from the list; that one is gone.`,
+        message: equipmentSaveRefusals.choiceGone(field.label),
       });
     else if (archived)
-      faults.push({ field: field.key, message: `${field.label}: that type is archived. Choose another.` });
+      faults.push({ field: field.key, message: equipmentSaveRefusals.archived(field.label) });
   }
   return faults;
 }
@@ -91,7 +92,7 @@ async function acceptedEntry(
     if (self && family === 'units' && self.entry.kind !== entry.kind && (await kindIsUsed(tx, self.dbId)))
       fields.push({
         field: 'kind',
-        message: `Kind: ${self.strings} strings rest on it. Make a new type of the other kind and give it to them.`,
+        message: equipmentSaveRefusals.kindInUse(self.strings),
       });
     const { conflicts, doubts } = judgeEntry(family, entry);
     fields.push(...conflicts);
@@ -129,7 +130,7 @@ function overtaken(family: EquipmentFamily, now: CatalogueType, typed: EntryInpu
       message: `now ${typedValue(f, now.item.entry[f.key]) || 'empty'}`,
     }));
   return new AppError('conflict', {
-    message: `${now.changedBy ?? 'Somebody'} changed this type while you were editing it. Nothing of yours is lost: look at the fields that differ, then save again or take theirs.`,
+    message: equipmentSaveRefusals.changedMeanwhile(now.changedBy ?? ''),
     fields: different,
   });
 }

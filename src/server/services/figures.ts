@@ -32,6 +32,7 @@ import {
 import { importedSiteDays } from '../queries/history-readings';
 import { tellSiteChanged } from '../queries/live-notices';
 import { addAuditEntry } from '../queries/people';
+import { figureRefusals } from '../../words/refusals-history';
 
 /** The irradiance-weighted temperature of this many days before the end of a period stands for a year's. */
 const YEAR_DAYS = 365;
@@ -40,7 +41,7 @@ const YEAR_DAYS_MIN = 300;
 
 const monthOf = (day: string): Period => {
   const period = periodOf(day.slice(0, 7));
-  if (!period) throw new RangeError(`${day} is no day`);
+  if (!period) throw new RangeError(figureRefusals.noDay(day));
   return period;
 };
 
@@ -147,7 +148,7 @@ export async function siteFigures(
     imported: await importedIn(tx, site.id, period),
     steps: lossSteps(
       sums,
-      [...byKind].map(([kind, kWh]) => ({ label: LOSS_WORDS[kind] ?? 'Other causes', kWh })),
+      [...byKind].map(([kind, kWh]) => ({ label: LOSS_WORDS[kind] ?? figureRefusals.otherCauses, kWh })),
     ),
     losses: losses.map((l) => ({
       cause: l.ref,
@@ -278,8 +279,8 @@ export async function setTariff(
   const site = found((await figuresSites(tx, from.at, ref))[0], 'site');
   if (!(await addTariff(tx, { siteId: site.id, ...tariff, personId: actor.personId })))
     throw new AppError('conflict', {
-      message: `A price from ${tariff.from} is there already. Take it away first, or choose another day.`,
-      fields: [{ field: 'from', message: 'A price from this day is there already.' }],
+      message: figureRefusals.priceFromTaken(tariff.from),
+      fields: [{ field: 'from', message: figureRefusals.priceTaken }],
     });
   await addAuditEntry(tx, {
     organisationId: actor.organisationId,

@@ -2,6 +2,7 @@ import { number } from '../../drawings/numbers';
 import type { Tx } from '../db/transaction';
 import type { PackData, PackTest } from '../reports/handover/data';
 import { shutdownTestReport } from './shutdown-test-report';
+import { handoverTestWords } from '../../words/refusals-as-built';
 
 /** The signed tests in force as the papers tell them, oldest first. */
 export async function packTests(tx: Tx, data: PackData): Promise<PackTest[]> {
@@ -21,19 +22,27 @@ export async function packTests(tx: Tx, data: PackData): Promise<PackTest[]> {
       fingerprint: fingerprint ?? '',
       facts: [
         [
-          'Operated by, on site',
+          handoverTestWords.operatedBy,
           plan ? `${plan.operator}, ${plan.onSite}${plan.others ? `, ${plan.others}` : ''}` : '',
         ],
-        ['Light and weather', plan ? [plan.light, plan.weather].filter(Boolean).join(', ') : ''],
+        [
+          handoverTestWords.lightAndWeather,
+          plan ? [plan.light, plan.weather].filter(Boolean).join(', ') : '',
+        ],
         [
           'Instrument',
           instrument
             ? `${instrument.name}, serial ${instrument.serial}, ${instrument.category} ${number(instrument.ratedV)} V, calibrated ${instrument.calibratedOn}`
-            : 'none: nothing was measured by instrument',
+            : handoverTestWords.nothingMeasured,
         ],
         [
           'Limits',
-          `${number(record.verdict.limits.outsideV)} V outside, ${number(record.verdict.limits.insideV)} V inside the array within ${number(record.verdict.limits.afterS)} s. ${record.verdict.limits.source}`,
+          handoverTestWords.limits(
+            number(record.verdict.limits.outsideV),
+            number(record.verdict.limits.insideV),
+            number(record.verdict.limits.afterS),
+            record.verdict.limits.source,
+          ),
         ],
       ],
       strings: record.verdict.strings.map((s) => {

@@ -7,6 +7,7 @@ import { spool } from '../files/spool';
 import { problem } from '../http/problem';
 import { visibleSite } from '../queries/visible-site';
 import { importHistory, type OnHistoryStep } from './history-import';
+import { historyStreamRefusals } from '../../words/refusals-history';
 
 const NDJSON = 'application/x-ndjson';
 
@@ -35,16 +36,12 @@ export async function answerHistoryImport(actor: Actor, asked: Asked, at: Date):
   await asActor(actor, async (tx) => found(await visibleSite(tx, asked.siteRef), 'site'));
   if (running >= AT_ONCE)
     throw new AppError('unavailable', {
-      message: 'Other files are being imported at this moment. Try again in half a minute; nothing is lost.',
+      message: historyStreamRefusals.othersImport,
       retryAfterS: 30,
     });
   running++;
   try {
-    const file = await spool(
-      asked.request,
-      HISTORY_FILE_MAX_BYTES,
-      'Import it in parts, such as a year at a time.',
-    );
+    const file = await spool(asked.request, HISTORY_FILE_MAX_BYTES, historyStreamRefusals.inParts);
     running++; // the work goes on when this function has answered
     const run = async (onStep: OnHistoryStep): Promise<HistoryImportView> => {
       try {

@@ -36,6 +36,7 @@ import { tellSiteChanged } from '../queries/live-notices';
 import { addAuditEntry } from '../queries/people';
 import { visibleSite } from '../queries/visible-site';
 import { timeZones } from './time-zones';
+import { historyImportRefusals } from '../../words/refusals-history';
 
 export type OnHistoryStep = (step: HistoryStep, done: number, of: number) => Promise<void>;
 interface How {
@@ -85,7 +86,7 @@ async function hashOf(path: string, start: number): Promise<Buffer> {
 
 const again = (before: { fileName: string; madeAt: Date; ref: string }): AppError =>
   new AppError('conflict', {
-    message: `This file was imported already, as "${before.fileName}" on ${before.madeAt.toISOString().slice(0, 10)}. Nothing is kept twice; take that import back first if it is to be read otherwise.`,
+    message: historyImportRefusals.importedAlready(before.fileName, before.madeAt.toISOString().slice(0, 10)),
     current: { import: before.ref },
   });
 
@@ -203,12 +204,12 @@ async function begun(tx: Tx, order: Parameters<typeof beginImport>[1]): Promise<
 }
 
 function checkSize({ rows, readings }: HistoryReader): void {
-  const parts = 'Import it in parts, such as a year at a time.';
+  const parts = historyImportRefusals.inParts;
   if (rows > HISTORY_ROWS_MAX)
-    throw new AppError('too_large', { message: `The file has more than ${HISTORY_ROWS_MAX} rows. ${parts}` });
+    throw new AppError('too_large', { message: historyImportRefusals.tooManyRows(HISTORY_ROWS_MAX, parts) });
   if (readings > HISTORY_READINGS_MAX)
     throw new AppError('too_large', {
-      message: `There are more than ${HISTORY_READINGS_MAX} readings in the file. ${parts}`,
+      message: historyImportRefusals.tooManyReadings(HISTORY_READINGS_MAX, parts),
     });
 }
 
@@ -217,7 +218,7 @@ function checkSeen(reader: HistoryReader, seen: HistoryOrder['seen']): void {
   const { rows, readings, leftOut } = reader;
   if (readings === 0)
     throw new AppError('invalid', {
-      message: 'No reading could be read from this file with these columns.',
+      message: historyImportRefusals.noReading,
       fields: reader.faults.slice(0, 50).map((f) => ({
         field: `rows.${f.row}.${f.column}`,
         message: `${f.message}. ${f.remedy}`,
@@ -225,7 +226,14 @@ function checkSeen(reader: HistoryReader, seen: HistoryOrder['seen']): void {
     });
   if (rows !== seen.rows || readings !== seen.readings || leftOut !== seen.leftOut)
     throw new AppError('conflict', {
-      message: `The server reads ${readings} readings from ${rows} rows and leaves ${leftOut} cells out; the page showed ${seen.readings}, ${seen.rows} and ${seen.leftOut}. The as-built may have changed since: load the page again, and look at the file anew.`,
+      message: historyImportRefusals.readsOtherwise(
+        readings,
+        rows,
+        leftOut,
+        seen.readings,
+        seen.rows,
+        seen.leftOut,
+      ),
     });
 }
 
@@ -247,7 +255,7 @@ export async function takeImportBack(
   );
   if (undone)
     throw new AppError('conflict', {
-      message: 'This import was taken back already. Load the page again to see by whom.',
+      message: historyImportRefusals.takenBackAlready,
     });
   await addAuditEntry(tx, {
     organisationId: site.organisationId,

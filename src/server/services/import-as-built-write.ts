@@ -8,6 +8,7 @@ import type { ImportParts } from '../queries/import-as-built';
 import { addStrings, setSlotCounts, setSlotFacts, type SlotChange } from './edit-as-built-strings';
 import type { OnStep } from './import-as-built';
 import { placeUnits } from './place-units';
+import { importWriteRefusals } from '../../words/refusals-as-built';
 
 interface How {
   at: Date;
@@ -27,7 +28,7 @@ function bookOf(list: readonly { name: string; ref: string }[]): (name: string) 
 /** Read and written in one transaction under the site's lock: only the catalogue can have changed meanwhile. */
 const gone = (): AppError =>
   new AppError('conflict', {
-    message: 'Something that the file names was removed at this moment. Check the file again.',
+    message: importWriteRefusals.partRemoved,
   });
 
 /** What is written wrong by its place in a batch is told by its row in the file. */

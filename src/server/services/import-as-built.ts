@@ -21,6 +21,7 @@ import { knownUnits, lockAsBuilt } from '../queries/placements';
 import { visibleSite } from '../queries/visible-site';
 import { fingerprintOf } from '../reports/fingerprint';
 import { writeImport } from './import-as-built-write';
+import { importRefusals } from '../../words/refusals-as-built';
 
 /** Told where the work is; may throw to give it up, which leaves nothing behind. */
 export type OnStep = (step: ImportStep, done: number, of: number) => Promise<void>;
@@ -87,9 +88,9 @@ async function unitsOf(
 function refusal(faults: readonly CellFault[]): AppError {
   const grave = faults.filter((f) => f.weight === 'fault');
   const [first] = grave;
-  const where = first ? ` Row ${first.row}, ${first.column}: ${first.message}.` : '';
+  const where = first ? importRefusals.firstWrong(first.row, first.column, first.message) : '';
   return new AppError('invalid', {
-    message: `Nothing was imported: ${grave.length === 1 ? 'one cell is' : `${grave.length} cells are`} wrong.${where}`,
+    message: importRefusals.cellsWrong(grave.length, where),
     fields: grave
       .slice(0, IMPORT_LISTED_MAX)
       .map((f) => ({ field: `rows.${f.row}.${f.column}`, message: `${f.message}. ${f.remedy}` })),
@@ -130,9 +131,8 @@ export async function importAsBuilt(
   if (hasFaults(faults)) throw refusal(faults);
   if (plan.changes.length > 0 && order.seen !== fingerprintOf(plan.changes))
     throw new AppError('conflict', {
-      message:
-        'The as-built has changed since you looked, so that this file would change something else now. Nothing was imported: check the file again, and look at what would change.',
-      fields: [{ field: 'seen', message: 'The as-built has changed since you looked.' }],
+      message: importRefusals.changedNothingImported,
+      fields: [{ field: 'seen', message: importRefusals.changed }],
     });
   if (plan.changes.length > 0)
     await writeImport(tx, actor, site.id, parts, read, plan, slots, { ...how, reason: order.reason }, onStep);

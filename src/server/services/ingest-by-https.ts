@@ -2,11 +2,12 @@ import type { IngestReply, RosterReply } from '../../schemas/ingest';
 import { AppError } from '../errors';
 import { admit } from '../ingest/admit';
 import { ingest, type Ingest } from '../ingest/service';
+import { ingestRefusals } from '../../words/refusals';
 
 function running(): Ingest {
   const service = ingest();
   if (service) return service;
-  throw new AppError('unavailable', { message: 'This process takes no readings.', retryAfterS: 10 });
+  throw new AppError('unavailable', { message: ingestRefusals.noReadingsHere, retryAfterS: 10 });
 }
 
 /**

@@ -29,6 +29,7 @@ import {
 import { tellSiteChanged } from '../queries/live-notices';
 import { addAuditEntry } from '../queries/people';
 import { visibleSite } from '../queries/visible-site';
+import { isolationRefusals } from '../../words/refusals-cases';
 
 /** A watch that nobody stops ends by itself. */
 export const WATCH_MAX_S = 30 * 60;
@@ -169,8 +170,8 @@ export async function startIsolation(
   const string = await isolableString(tx, site.id, start.string);
   if (!string)
     throw new AppError('invalid', {
-      message: `This string is not one of ${site.name}. Choose it from the list.`,
-      fields: [{ field: 'string', message: 'Choose a string of this site.' }],
+      message: isolationRefusals.notOfSite(site.name),
+      fields: [{ field: 'string', message: isolationRefusals.chooseString }],
     });
   const before = await openIsolation(tx, site.id);
   if (before && overdue(before, at))
@@ -186,8 +187,8 @@ export async function startIsolation(
     const open = await openIsolation(tx, site.id);
     throw new AppError('conflict', {
       message: open
-        ? `${open.stringName} is being watched already: ${open.startedBy} started it, with ${open.personOnSite} on site. One string at a time; watch that one, or have it stopped first.`
-        : 'Somebody started another watch at this moment. Reload the page.',
+        ? isolationRefusals.watchedAlready(open.stringName, open.startedBy, open.personOnSite)
+        : isolationRefusals.startedMeanwhile,
     });
   }
   await addAuditEntry(tx, {
@@ -231,7 +232,7 @@ export async function stopIsolation(
     }));
   if (!done)
     throw new AppError('conflict', {
-      message: `No string of ${site.name} is being watched: it was stopped already.`,
+      message: isolationRefusals.notWatched(site.name),
     });
   await addAuditEntry(tx, {
     organisationId: site.organisationId,

@@ -8,6 +8,7 @@ import { JOBS, type JobKind } from '../jobs/tasks';
 import type { QueuedJob } from '../queries/job-queue';
 import { failedRuns, lastRuns, sitesByNumber, type RunRow } from '../queries/job-runs';
 import { addAuditEntry } from '../queries/people';
+import { jobRefusals } from '../../words/refusals-cases';
 
 const QUEUE_MAX = 5000;
 const FAILURES_MAX = 50;
@@ -139,10 +140,9 @@ export async function retryFailed(
   at: Date,
 ): Promise<JobsPage> {
   const found = (await seenJobs(tx))?.jobs.find((j) => j.id === job);
-  if (!found)
-    throw new AppError('conflict', { message: 'This job is done meanwhile: nothing is left to try.' });
+  if (!found) throw new AppError('conflict', { message: jobRefusals.doneMeanwhile });
   if (found.error === null || !(await retryJob(job)))
-    throw new AppError('conflict', { message: 'This job runs already. Look again in a minute.' });
+    throw new AppError('conflict', { message: jobRefusals.running });
   await addAuditEntry(tx, {
     organisationId: by.actor.organisationId,
     personId: by.actor.personId,

@@ -11,6 +11,7 @@ import { addAuditEntry } from '../queries/people';
 import { lockAsBuilt } from '../queries/placements';
 import { visibleSite } from '../queries/visible-site';
 import { needReason, type How } from './edit-as-built';
+import { loggerTokenRefusals } from '../../words/refusals-people';
 
 /** 256 bits in letters that survive being read out and typed. */
 export const newToken = (): string => `wl_${randomBytes(32).toString('base64url')}`;
@@ -93,7 +94,7 @@ export async function endLoggerToken(
   const { ended, name, serial } = found(await endTokenNow(tx, loggerId, refs.token, actor.personId), 'token');
   if (ended)
     throw new AppError('conflict', {
-      message: 'This token had ended already. Load the page again to see it.',
+      message: loggerTokenRefusals.endedAlready,
     });
   await addAuditEntry(tx, {
     organisationId: site.organisationId,

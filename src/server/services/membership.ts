@@ -8,6 +8,7 @@ import { stringsNow } from '../queries/now';
 import { sitesNow } from '../queries/sites-now';
 import { visibleSite, type VisibleSite } from '../queries/visible-site';
 import { readIsolations } from './isolation';
+import { membershipWords } from '../../words/refusals-cases';
 
 /** A, from which a current says something of where a unit sits. */
 const CURRENT_MIN = 0.5;
@@ -119,7 +120,7 @@ function judge({ rows, currents }: Read): Judgement {
   const left = strings.filter((s) => !judged.includes(s));
   const dark = left.flatMap((s) =>
     s.slots.map((slot, unit): JudgedUnit => {
-      const words = 'Its string carried no current in these hours: it can not be told.';
+      const words = membershipWords.noCurrent;
       const none = new Float64Array(0);
       return {
         string: s.name,
@@ -189,12 +190,10 @@ function suspectsOf({ units, typicals }: Judgement, steps: readonly number[]): M
 
 /** Why a unit can't be told, as a reason that several share. */
 function reasonOf(j: JudgedUnit): string {
-  if (j.view.steps === 0)
-    return 'It reported no current worth judging: the string or the inverter did not run.';
-  if (j.view.steps < 12) return 'Too few reports with current.';
-  if (j.undecidedWith.length > 0)
-    return 'Its string and others carry the same current, closer than its accuracy can part them.';
-  return 'Too few reports while every string ran.';
+  if (j.view.steps === 0) return membershipWords.noneWorthJudging;
+  if (j.view.steps < 12) return membershipWords.tooFewReports;
+  if (j.undecidedWith.length > 0) return membershipWords.tooAlike;
+  return membershipWords.tooFewWhileAllRan;
 }
 
 function reasonsOf(judged: readonly JudgedUnit[]): MembershipPage['reasons'] {

@@ -23,13 +23,14 @@ import {
 import { addMessage } from '../queries/outbox';
 import { addAuditEntry } from '../queries/people';
 import { endSessionByKey, secondFactorOf, sessionsOf, setSecondFactor } from '../queries/sessions';
+import { myAccountWords } from '../../words/refusals-people';
 
 const EMAIL_HOURS = 24;
 const HOUR_MS = 3_600_000;
 
 /** Browser and system in a few words, from what a browser says of itself; nothing that only a guess could tell. */
 export function deviceWords(agent: string | null): string {
-  if (!agent) return 'An unknown device';
+  if (!agent) return myAccountWords.unknownDevice;
   const browser =
     [
       ['Edg/', 'Edge'],
@@ -127,8 +128,8 @@ async function confirmed({ actor }: Caller, current: string): Promise<void> {
   } catch (error) {
     if (error instanceof AppError && error.kind === 'invalid')
       throw new AppError('invalid', {
-        message: 'This is not your password. Nothing was changed.',
-        fields: [{ field: 'current', message: 'This is not your password.' }],
+        message: myAccountWords.wrongPassword,
+        fields: [{ field: 'current', message: myAccountWords.wrongPasswordShort }],
       });
     throw error;
   }
@@ -160,12 +161,9 @@ export async function askForEmail(
     });
     const { text, html } = letter({
       greeting: `Hello ${caller.viewer.name}`,
-      paragraphs: [
-        'You asked to sign in to Wakeline with this address from now on.',
-        `The link below confirms it, once, for ${EMAIL_HOURS} hours.`,
-      ],
-      action: { words: 'Use this address', href: `${publicUrl()}${paths.confirmEmail(token)}` },
-      footer: 'If you did not ask for it, leave this letter: nothing changes.',
+      paragraphs: [myAccountWords.askedForAddress, myAccountWords.linkConfirms(EMAIL_HOURS)],
+      action: { words: myAccountWords.useAddress, href: `${publicUrl()}${paths.confirmEmail(token)}` },
+      footer: myAccountWords.leaveLetter,
     });
     await addMessage(tx, {
       organisationId: caller.actor.organisationId,
@@ -174,7 +172,7 @@ export async function askForEmail(
       kind: 'email_change',
       eventKey: `account_link:${hash.toString('hex')}`,
       to: { address: email, name: caller.viewer.name },
-      subject: 'Your new address for Wakeline',
+      subject: myAccountWords.newAddress,
       text,
       html,
     });
@@ -195,8 +193,7 @@ export async function endOtherSessions(tx: Tx, caller: Caller, key: string | und
 export async function beginSecondFactor(tx: Tx, caller: Caller, current: string): Promise<SecondFactorBegun> {
   await confirmed(caller, current);
   const factor = found(await secondFactorOf(tx, caller.actor.personId), 'person');
-  if (factor.confirmedAt)
-    throw new AppError('conflict', { message: 'A second factor is in force already. End it first.' });
+  if (factor.confirmedAt) throw new AppError('conflict', { message: myAccountWords.factorInForce });
   const secret = newSecret();
   await setSecondFactor(tx, caller.actor.personId, { secret, usedStep: null });
   return { secret, picture: renderSVG(secretAddress(secret, caller.viewer.email), { border: 2 }) };
@@ -216,9 +213,8 @@ export async function confirmSecondFactor(
   const step = stepOfCode(factor.secret, code, factor.usedStep, at);
   if (step === null)
     throw new AppError('invalid', {
-      message:
-        'This code does not fit. Type the one that your authenticator shows now; is the phone’s clock right?',
-      fields: [{ field: 'code', message: 'This code does not fit.' }],
+      message: myAccountWords.codeWrongCheckClock,
+      fields: [{ field: 'code', message: myAccountWords.codeWrong }],
     });
   const { shown, hashes } = newRecoveryCodes();
   await setSecondFactor(tx, caller.actor.personId, {
@@ -256,9 +252,8 @@ export async function takeSecondFactor(tx: Tx, personId: number, code: string, a
     const spent = recoveryHash(code);
     if (!factor?.recoveryCodes.includes(spent))
       throw new AppError('unauthenticated', {
-        message:
-          'This code does not fit. Type the one that your authenticator shows now, or a recovery code.',
-        fields: [{ field: 'code', message: 'This code does not fit.' }],
+        message: myAccountWords.codeWrongOrRecovery,
+        fields: [{ field: 'code', message: myAccountWords.codeWrong }],
       });
     await setSecondFactor(tx, personId, { recoveryCodes: factor.recoveryCodes.filter((h) => h !== spent) });
   }

@@ -8,6 +8,7 @@ import { choiceOf, saveChoice, sitesToChoose } from '../queries/notice-choices';
 import { noticesNow, noticesOf } from '../queries/notices';
 import { addAuditEntry } from '../queries/people';
 import { timeZones } from './time-zones';
+import { noticeChoiceRefusals } from '../../words/refusals-people';
 
 const A_PAGE = 50;
 
@@ -72,22 +73,21 @@ export async function saveChoices(
   address: string | null,
 ): Promise<void> {
   if (body.timeZone !== null && !isTimeZone(body.timeZone))
-    throw wrong('timeZone', 'There is no such time zone. Choose one of the list.');
+    throw wrong('timeZone', noticeChoiceRefusals.noSuchZone);
   const mine = kindsOf(actor.role);
   const rules: Partial<Record<string, How>> = {};
   for (const [kind, how] of Object.entries(body.rules) as [(typeof mine)[number], How][]) {
     const standard = KINDS[kind].defaults[actor.role];
     if (!mine.includes(kind))
-      throw wrong(`rules.${kind}`, `The role ${actor.role} is not told of “${KINDS[kind].name}”.`);
+      throw wrong(`rules.${kind}`, noticeChoiceRefusals.roleNotTold(actor.role, KINDS[kind].name));
     if (KINDS[kind].fixed && how !== standard)
-      throw wrong(`rules.${kind}`, `“${KINDS[kind].name}” can’t be changed: ${KINDS[kind].fixed}`);
+      throw wrong(`rules.${kind}`, noticeChoiceRefusals.fixed(KINDS[kind].name, KINDS[kind].fixed));
     if (how !== standard) rules[kind] = how;
   }
   const sites = await sitesToChoose(tx);
   const siteIds = body.sites?.map((ref) => {
     const site = sites.find((s) => s.ref === ref);
-    if (!site)
-      throw wrong('sites', 'One of these sites is not open to you. Reload the page and choose again.');
+    if (!site) throw wrong('sites', noticeChoiceRefusals.siteNotOpen);
     return site.id;
   });
   const before = await choiceOf(tx, actor.personId);

@@ -17,6 +17,7 @@ import { tellSiteChanged } from '../queries/live-notices';
 import { addAuditEntry, findPersonName } from '../queries/people';
 import { visibleSite } from '../queries/visible-site';
 import { gatherCaseFigures } from './case-figures';
+import { openCaseRefusals } from '../../words/refusals-cases';
 
 export interface CaseToOpen {
   /** Made where it was typed: the same one twice opens one case. */
@@ -51,8 +52,7 @@ const wrong = (field: string, message: string): FieldFault => ({ field: `body.${
 export function personAmong(people: readonly StaffPerson[], ref: string, field: string): StaffPerson {
   const person = people.find((p) => p.ref === ref);
   if (person) return person;
-  const message =
-    'This person is not among those who look after your sites. Reload the page and choose again.';
+  const message = openCaseRefusals.personNotYours;
   throw new AppError('invalid', { message, fields: [wrong(field, message)] });
 }
 
@@ -65,13 +65,13 @@ export async function partsOf(
   const refs = [...new Set([...call.strings, ...call.parts.map((p) => p.string)])];
   const strings = await stringsByRef(tx, siteId, refs);
   if (strings.size < refs.length) {
-    const message = 'One of the strings is not at this site. Reload the page and choose again.';
+    const message = openCaseRefusals.stringNotHere;
     throw new AppError('invalid', { message, fields: [wrong('strings', message)] });
   }
   const parts = call.parts.map(({ string, position }) => {
     const { name, slots } = found(strings.get(string), 'string');
     if (position !== null && !slots.has(position)) {
-      const message = `${name} has no position ${position}. Choose one of its positions.`;
+      const message = openCaseRefusals.noPosition(name, position);
       throw new AppError('invalid', { message, fields: [wrong('parts', message)] });
     }
     return {
@@ -96,25 +96,25 @@ export async function partsOf(
 export async function openCase(tx: Tx, actor: Actor, call: CaseToOpen, at: Date): Promise<OpenedCase> {
   if (!mayUse(actor.role, call.origin === 'customer' ? 'case.report' : 'case.write'))
     throw new AppError('forbidden', {
-      message: `The role ${actor.role} does not open cases. Ask a manager.`,
+      message: openCaseRefusals.roleOpensNone(actor.role),
     });
   const site = found(await visibleSite(tx, call.site), 'site');
   const known = await caseByRef(tx, call.ref);
   if (known) {
     if (known.openedById === actor.personId && known.siteRef === site.ref)
       return { id: known.ref, number: known.number };
-    throw new AppError('conflict', { message: 'Another case has this identifier. Open the form again.' });
+    throw new AppError('conflict', { message: openCaseRefusals.identifierTaken });
   }
   const cause = call.cause ? found(await causeForCase(tx, call.cause), 'cause') : null;
   if (cause && cause.siteId !== site.id)
     throw new AppError('invalid', {
-      message: 'The cause is not of this site.',
-      fields: [wrong('cause', 'The cause is not of this site.')],
+      message: openCaseRefusals.causeElsewhere,
+      fields: [wrong('cause', openCaseRefusals.causeElsewhere)],
     });
   const existing = cause && (await openCaseOfCause(tx, cause.id));
   if (existing)
     throw new AppError('conflict', {
-      message: `Case ${existing.number} is open for this cause: ${existing.title}. Go on there.`,
+      message: openCaseRefusals.openAlready(existing.number, existing.title),
       current: existing,
     });
   const assignee = call.assignee ? personAmong(await staffOf(tx), call.assignee, 'assignee') : null;
@@ -137,8 +137,7 @@ export async function openCase(tx: Tx, actor: Actor, call: CaseToOpen, at: Date)
     at,
     before,
   });
-  if (!made)
-    throw new AppError('conflict', { message: 'Another case has this identifier. Open the form again.' });
+  if (!made) throw new AppError('conflict', { message: openCaseRefusals.identifierTaken });
   const person = (await findPersonName(tx, actor.personId)) ?? '';
   await addCaseEntry(tx, {
     caseId: made.id,

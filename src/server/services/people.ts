@@ -25,6 +25,7 @@ import { endTokens } from '../queries/api-tokens';
 import { addMessage } from '../queries/outbox';
 import { addAuditEntry, findPersonName } from '../queries/people';
 import { siteChoices } from '../queries/site';
+import { invitationWords } from '../../words/refusals-people';
 
 /** An invitation can be used for so long. */
 export const INVITATION_DAYS = 7;
@@ -73,8 +74,8 @@ async function numbersOf(tx: Tx, sites: readonly string[]): Promise<number[]> {
   const missing = sites.filter((ref) => !known.has(ref));
   if (missing.length > 0)
     throw new AppError('invalid', {
-      message: 'One of the sites is not among yours. Reload the page and choose again.',
-      fields: [{ field: 'sites', message: 'One of them is not among yours.' }],
+      message: invitationWords.siteNotYours,
+      fields: [{ field: 'sites', message: invitationWords.oneNotYours }],
     });
   return [...known.values()];
 }
@@ -93,13 +94,13 @@ export async function invite(
 ): Promise<void> {
   if (body.role === 'customer' && body.sites.length === 0)
     throw new AppError('invalid', {
-      message: 'Choose the sites that this customer will see.',
-      fields: [{ field: 'sites', message: 'Choose at least one site.' }],
+      message: invitationWords.chooseCustomerSites,
+      fields: [{ field: 'sites', message: invitationWords.chooseSite }],
     });
   if (await isAddressTaken(body.email))
     throw new AppError('conflict', {
-      message: `Somebody signs in with ${body.email} already. Change that person, or use another address.`,
-      fields: [{ field: 'email', message: 'Somebody signs in with this address already.' }],
+      message: invitationWords.signsInAlready(body.email),
+      fields: [{ field: 'email', message: invitationWords.addressTaken }],
     });
   const sites = body.role === 'customer' ? await numbersOf(tx, body.sites) : [];
   const token = newToken();
@@ -117,12 +118,9 @@ export async function invite(
   const from = (await findPersonName(tx, actor.personId)) ?? 'A manager';
   const { text, html } = letter({
     greeting: `Hello ${body.name}`,
-    paragraphs: [
-      `${from} invites you to Wakeline, where the solar sites in their care are watched.`,
-      `The link below works once, for ${INVITATION_DAYS} days. You choose a password of your own.`,
-    ],
-    action: { words: 'Accept the invitation', href: `${publicUrl()}${paths.invitation(token)}` },
-    footer: 'If you did not expect this, leave it: without the link nothing happens.',
+    paragraphs: [invitationWords.invites(from), invitationWords.linkWorksOnce(INVITATION_DAYS)],
+    action: { words: invitationWords.accept, href: `${publicUrl()}${paths.invitation(token)}` },
+    footer: invitationWords.notExpected,
   });
   await addMessage(tx, {
     organisationId: actor.organisationId,
@@ -131,7 +129,7 @@ export async function invite(
     kind: 'invitation',
     eventKey: `invitation:${ref}`,
     to: { address: body.email, name: body.name },
-    subject: 'Your invitation to Wakeline',
+    subject: invitationWords.subject,
     text,
     html,
   });
@@ -154,7 +152,7 @@ export async function withdrawInvitation(
   address: string | null,
 ): Promise<void> {
   if (!(await endInvitation(tx, ref, at)))
-    throw new AppError('conflict', { message: 'This invitation was used or ended before. Reload the page.' });
+    throw new AppError('conflict', { message: invitationWords.usedBefore });
   await addAuditEntry(tx, {
     organisationId: actor.organisationId,
     personId: actor.personId,
@@ -182,7 +180,7 @@ export async function changePerson(
   const self = before.id === actor.personId;
   if (self && ((change.role !== undefined && change.role !== before.role) || change.active === false))
     throw new AppError('forbidden', {
-      message: 'Nobody changes their own role or ends their own access. Ask another manager.',
+      message: invitationWords.ownRole,
     });
   const role = change.role ?? before.role;
   const active = change.active ?? before.active;
@@ -192,7 +190,7 @@ export async function changePerson(
     );
     if (others.length === 0)
       throw new AppError('conflict', {
-        message: `${before.name} is the last manager. Make somebody else a manager first.`,
+        message: invitationWords.lastManager(before.name),
       });
   }
   await updatePerson(tx, before.id, change, at);

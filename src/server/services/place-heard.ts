@@ -4,6 +4,7 @@ import type { Tx } from '../db/transaction';
 import { AppError, found } from '../errors';
 import { visibleSite } from '../queries/visible-site';
 import { placeUnits } from './place-units';
+import { placeHeardRefusals } from '../../words/refusals-as-built';
 
 /** How many slots each kind changes. */
 const SLOTS: Record<PlaceBody['kind'], number> = { place: 1, replace: 1, swap: 2, move: 2 };
@@ -14,21 +15,23 @@ function check(body: PlaceBody): void {
   };
   const { kind, slots } = body;
   if (slots.length !== SLOTS[kind])
-    refuse('slots', `A ${kind} changes ${SLOTS[kind] === 1 ? 'one slot' : 'two slots'}.`);
+    refuse(
+      'slots',
+      `A ${kind} changes ${SLOTS[kind] === 1 ? placeHeardRefusals.oneSlot : placeHeardRefusals.twoSlots}.`,
+    );
   const [one, two] = slots;
-  if (kind === 'place' && one?.expected !== null)
-    refuse('slots.0.serial', 'There is a unit in this slot. Replace it, or choose an empty slot.');
+  if (kind === 'place' && one?.expected !== null) refuse('slots.0.serial', placeHeardRefusals.slotTaken);
   if (kind === 'replace' && (one?.expected === null || one?.serial === null))
-    refuse('slots.0.serial', 'Give the serial of the unit that takes the place of the old one.');
+    refuse('slots.0.serial', placeHeardRefusals.giveOldSerial);
   if (one && two && one.string === two.string && one.position === two.position)
-    refuse('slots.1.position', 'Choose two different slots.');
+    refuse('slots.1.position', placeHeardRefusals.chooseTwo);
   if (
     kind === 'swap' &&
     (one?.serial !== two?.expected || two?.serial !== one?.expected || one?.serial === null)
   )
-    refuse('slots.1.serial', 'A swap puts each unit into the other’s slot. Read both labels again.');
+    refuse('slots.1.serial', placeHeardRefusals.swapNeeds);
   if (kind === 'move' && (one?.serial !== null || two?.serial !== one.expected || two?.expected !== null))
-    refuse('slots.1.serial', 'A move takes a unit from one slot to an empty one.');
+    refuse('slots.1.serial', placeHeardRefusals.moveNeeds);
 }
 
 /**

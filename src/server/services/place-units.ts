@@ -23,6 +23,7 @@ import {
   retypeUnits,
   standingSlots,
 } from '../queries/placements';
+import { placeUnitsRefusals } from '../../words/refusals-as-built';
 
 export type { PlaceChange, PlaceFault } from '../../domain/commissioning/as-built/plan-placements';
 
@@ -97,7 +98,7 @@ async function nameChangers(tx: Tx, siteId: number, faults: PlaceFault[]): Promi
   );
   for (const f of stale) {
     const by = f.slot === undefined ? undefined : names.get(f.slot);
-    if (by) f.message += ` ${by.name} changed it.`;
+    if (by) f.message += placeUnitsRefusals.changedBy(by.name);
   }
 }
 
@@ -169,15 +170,15 @@ export async function placeUnits(
 function refuse(plan: PlacementPlan, options: PlaceOptions, stage: string, nowMs: number): void {
   if (options.at.getTime() > nowMs + AHEAD_MAX_MS)
     throw new AppError('invalid', {
-      message: `The time ${options.at.toISOString()} has not come yet. Set the clock of the phone, then try again.`,
-      fields: [{ field: 'at', message: 'This time has not come yet.' }],
+      message: placeUnitsRefusals.timeAhead(options.at.toISOString()),
+      fields: [{ field: 'at', message: placeUnitsRefusals.timeNotCome }],
     });
   if (plan.faults.length > 0) {
     const only = plan.faults.every((f) => CONFLICTS.includes(f.kind));
     const [first] = plan.faults;
     const more = plan.faults.length > 1 ? ` And ${plan.faults.length - 1} more.` : '';
     throw new AppError(only ? 'conflict' : 'invalid', {
-      message: `Nothing was changed. ${first?.message ?? ''}${more}`,
+      message: placeUnitsRefusals.nothingChanged(first?.message ?? '', more),
       fields: plan.faults.map((f) => ({ field: `changes.${f.index}.${f.field}`, message: f.message })),
       // of which kind each is: what may be done about it follows from that
       current: plan.faults,
@@ -186,8 +187,8 @@ function refuse(plan: PlacementPlan, options: PlaceOptions, stage: string, nowMs
   const leaves = plan.moves.some((m) => m.before !== null) || plan.vacated.length > 0;
   if (options.reason.trim() === '' && plan.moves.length > 0 && (leaves || stage === 'operating'))
     throw new AppError('invalid', {
-      message: 'Say why: a unit that was placed leaves its slot, or the site is operating.',
-      fields: [{ field: 'reason', message: 'Say why, in a few words. It stays in the history.' }],
+      message: placeUnitsRefusals.sayWhy,
+      fields: [{ field: 'reason', message: placeUnitsRefusals.sayWhyShort }],
     });
 }
 

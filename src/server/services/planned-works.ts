@@ -15,6 +15,7 @@ import {
   stringsOfSite,
 } from '../queries/planned-works';
 import { visibleSite } from '../queries/visible-site';
+import { plannedWorkRefusals } from '../../words/refusals-cases';
 
 /** Longer than this is no visit: a forgotten one would hide what happens. */
 const LONGEST_DAYS = 31;
@@ -54,18 +55,14 @@ export async function planWork(
   const refuse = (field: string, message: string): never => {
     throw new AppError('invalid', { message, fields: [{ field, message }] });
   };
-  if (!times) return refuse('from', 'Give a date and a time.');
-  if (times.to <= times.from) refuse('to', 'The end must come after the beginning.');
-  if (times.to <= at) refuse('to', 'This is over already. Planned works are entered before they end.');
+  if (!times) return refuse('from', plannedWorkRefusals.giveDateAndTime);
+  if (times.to <= times.from) refuse('to', plannedWorkRefusals.endAfterBeginning);
+  if (times.to <= at) refuse('to', plannedWorkRefusals.overAlready);
   if (times.to.getTime() - times.from.getTime() > LONGEST_DAYS * DAY_MS)
-    refuse(
-      'to',
-      `Works last ${LONGEST_DAYS} days at most: enter longer ones in parts, so that none is forgotten.`,
-    );
+    refuse('to', plannedWorkRefusals.tooLong(LONGEST_DAYS));
   const strings = await stringsOfSite(tx, site.id);
   const chosen = work.strings?.map((ref) => strings.find((s) => s.id === ref));
-  if (chosen?.some((s) => s === undefined))
-    refuse('strings', 'One of these strings is not at this site any more. Load the page again.');
+  if (chosen?.some((s) => s === undefined)) refuse('strings', plannedWorkRefusals.stringGone);
   const fresh = await addPlannedWork(tx, {
     ref: work.ref,
     siteId: site.id,

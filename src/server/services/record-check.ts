@@ -11,6 +11,7 @@ import { tellSiteChanged } from '../queries/live-notices';
 import { visibleSite } from '../queries/visible-site';
 import { canonicalJson } from '../reports/fingerprint';
 import { clockFault, recordedMeanwhile, refTaken, refuseFaults } from './recorded';
+import { recordCheckRefusals } from '../../words/refusals-as-built';
 
 export interface Recorded<T> {
   record: T;
@@ -31,7 +32,7 @@ export async function recordCheck(
   now: Date,
 ): Promise<Recorded<CheckRecord>> {
   const site = found(await visibleSite(tx, siteRef), 'site');
-  const string = found(await lockString(tx, site.id, input.stringId), 'string at this site');
+  const string = found(await lockString(tx, site.id, input.stringId), recordCheckRefusals.stringHere);
   const known = await checkByRef(tx, input.ref);
   if (known) {
     if (!sameCheck(known, input, actor)) throw refTaken();
@@ -64,7 +65,7 @@ async function refuseBad(tx: Tx, input: CheckInput, now: Date): Promise<void> {
   refuseFaults([
     ...(clock ? [clock] : []),
     ...(input.result === 'not_applicable' && input.reason === ''
-      ? [{ field: 'body.reason', message: 'Say why the check does not apply here.' }]
+      ? [{ field: 'body.reason', message: recordCheckRefusals.sayWhy }]
       : []),
     ...figureFaults(input.check, input.result, input.figures, (id) => connectors.has(id)).map((f) => ({
       field: `body.figures.${f.figure}`,

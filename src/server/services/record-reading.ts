@@ -18,6 +18,7 @@ import {
 import { visibleSite } from '../queries/visible-site';
 import type { Recorded } from './record-check';
 import { clockFault, recordedMeanwhile, refTaken, refuseFaults } from './recorded';
+import { recordReadingRefusals } from '../../words/refusals-as-built';
 
 /**
  * Records one meter reading and judges it: against what should be at that moment by type, command and roll call, with
@@ -32,7 +33,7 @@ export async function recordReading(
   now: Date,
 ): Promise<Recorded<ReadingRecord>> {
   const site = found(await visibleSite(tx, siteRef), 'site');
-  const string = found(await lockString(tx, site.id, input.stringId), 'string at this site');
+  const string = found(await lockString(tx, site.id, input.stringId), recordReadingRefusals.stringHere);
   const known = await readingByRef(tx, input.ref);
   if (known) {
     if (!sameReading(known, input, actor)) throw refTaken();
@@ -76,7 +77,7 @@ async function judgedReading(
   }));
   if (!strings.some((s) => s.id === input.stringId))
     throw new AppError('conflict', {
-      message: `${string.name} has no slots on the as-built: what a reading means can’t be told. Enter its slots first.`,
+      message: recordReadingRefusals.noSlots(string.name),
     });
   const sheet = {
     unitTypes: await unitTypesOf(tx, siteId),

@@ -1,4 +1,5 @@
 import { AppError, type FieldFault } from '../errors';
+import { recordRefusals } from '../../words/refusals-as-built';
 
 /** What every record has in common that is made on a phone and sent later. */
 
@@ -15,12 +16,12 @@ export function clockFault(at: string, now: Date): FieldFault | undefined {
   if (ms > AHEAD_MS)
     return {
       field: 'body.at',
-      message: `The time is ${minute(new Date(at))}, ahead of the server’s clock (${minute(now)}). Set the clock of the phone or computer that recorded it, then send it again.`,
+      message: recordRefusals.timeAhead(minute(new Date(at)), minute(now)),
     };
   if (ms < -OLDEST_MS)
     return {
       field: 'body.at',
-      message: `The time is ${minute(new Date(at))}, more than a year ago; the server’s clock says ${minute(now)}. Set the clock of the phone or computer that recorded it, then send it again.`,
+      message: recordRefusals.timeLongAgo(minute(new Date(at)), minute(now)),
     };
   return undefined;
 }
@@ -37,17 +38,16 @@ export function refuseFaults(faults: readonly FieldFault[]): void {
 /** The identifier was used for something else: for another record, or for what the sender can't see. */
 export const refTaken = (): AppError =>
   new AppError('conflict', {
-    message:
-      'Another record carries this identifier already, with other content. Nothing was changed; record it again.',
-    fields: [{ field: 'body.ref', message: 'Make a new identifier for a new record.' }],
+    message: recordRefusals.identifierTaken,
+    fields: [{ field: 'body.ref', message: recordRefusals.makeNewIdentifier }],
   });
 
 /** Somebody else recorded the same thing meanwhile; `current` is theirs. */
 export function recordedMeanwhile(what: string, current: { person: string; at: string } | null): AppError {
   return new AppError('conflict', {
     message: current
-      ? `${current.person} recorded ${what} at ${minute(new Date(current.at))}, which you have not seen. Nothing is lost: compare both, then keep theirs or send yours again in place of theirs.`
-      : `The record of ${what} that this one takes the place of is not here. Send that one first.`,
+      ? recordRefusals.notSeen(current.person, what, minute(new Date(current.at)))
+      : recordRefusals.sendEarlierFirst(what),
     current,
   });
 }

@@ -6,6 +6,7 @@ import { checked } from '../http/endpoint';
 import { explain } from '../http/problem';
 import { startRollCall } from './start-roll-call';
 import { stopRollCall } from './stop-roll-call';
+import { rollCallFormWords } from '../../words/refusals-cases';
 
 /** What was typed into the plain form and what was wrong with it. */
 export interface TypedStart {
@@ -28,7 +29,7 @@ export async function rollCallByForm(
   address: string | null,
 ): Promise<TypedStart | null> {
   if (!mayUse(actor.role, 'roll_call.run'))
-    throw new AppError('forbidden', { message: 'A manager or a technician starts and stops a roll call.' });
+    throw new AppError('forbidden', { message: rollCallFormWords.whoStarts });
   const sent = (form ?? {}) as Record<string, unknown>;
   const personOnSite = typeof sent.personOnSite === 'string' ? sent.personOnSite : '';
   try {

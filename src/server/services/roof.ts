@@ -10,6 +10,7 @@ import { visibleSite } from '../queries/visible-site';
 import { fingerprintOf } from '../reports/fingerprint';
 import { needReason, tellAll } from './edit-as-built';
 import { setSlotFacts } from './edit-as-built-strings';
+import { roofRefusals } from '../../words/refusals-as-built';
 
 /** @throws AppError not_found */
 export async function roofPlanOf(tx: Tx, siteRef: string): Promise<RoofPlan> {
@@ -49,19 +50,19 @@ export async function saveRoof(
   const byId = new Map(now.strings.map((s) => [s.id, s]));
   const stale: FieldFault[] = [];
   if (save.outline && save.outline.seen !== now.outlineVersion)
-    stale.push({ field: 'outline', message: 'The outline has been changed since you opened it.' });
+    stale.push({ field: 'outline', message: roofRefusals.outlineChanged });
   save.strings.forEach(({ id, seen }, n) => {
     const string = byId.get(id);
-    if (!string) stale.push({ field: `strings.${n}`, message: 'A string is not there any more.' });
+    if (!string) stale.push({ field: `strings.${n}`, message: roofRefusals.stringGone });
     else if (string.version !== seen)
       stale.push({
         field: `strings.${n}`,
-        message: `${string.name} has been laid anew since you opened it.`,
+        message: roofRefusals.laidAnew(string.name),
       });
   });
   if (stale.length > 0)
     throw new AppError('conflict', {
-      message: `Nothing was saved. ${stale.map((f) => f.message).join(' ')} Look at how it is now, then keep yours or theirs.`,
+      message: roofRefusals.nothingSaved(stale.map((f) => f.message).join(' ')),
       fields: stale,
     });
   const how = { reason: save.reason, source: 'forms', address };

@@ -4,15 +4,15 @@ import type { ChangedSavedView, SavedView, newSavedView } from '../../schemas/ap
 import type { Tx } from '../db/transaction';
 import { AppError } from '../errors';
 import { addSavedView, changeSavedView, dropSavedView } from '../queries/saved-views';
+import { savedViewRefusals } from '../../words/refusals-cases';
 
 const taken = (name: string): AppError =>
   new AppError('conflict', {
-    message: `A view of yours is called “${name}” already. Choose another name.`,
-    fields: [{ field: 'name', message: 'A view of yours is called that already. Choose another name.' }],
+    message: savedViewRefusals.nameTaken(name),
+    fields: [{ field: 'name', message: savedViewRefusals.nameTakenShort }],
   });
 /** Alike for what does not exist and what another person made: only its maker changes a view. */
-const none = (): AppError =>
-  new AppError('not_found', { message: 'No such view of yours. Only who made a view can change it.' });
+const none = (): AppError => new AppError('not_found', { message: savedViewRefusals.notYours });
 
 /** @throws AppError conflict */
 export async function keepView(

@@ -19,6 +19,7 @@ import {
   updateThresholds,
 } from '../queries/settings';
 import { timeZones } from './time-zones';
+import { logoRefusals } from '../../words/refusals-people';
 
 /** What an organisation sets for itself, every change on record. */
 
@@ -102,12 +103,12 @@ export const receiveLogo = (request: Request): Promise<{ data: Buffer; width: nu
   spooled(request, LOGO_MAX_BYTES, async (file) => {
     const { kind, fault } = sniff(file.head);
     if (kind === null) throw refused(fault);
-    if (kind === 'pdf') throw refused('This is a PDF. Send the logo as a PNG, JPEG or WebP picture.');
+    if (kind === 'pdf') throw refused(logoRefusals.pdf);
     try {
       return await readLogo(file.path);
     } catch (error) {
       throw refused(
-        `The picture can’t be read (${error instanceof Error ? (error.message.split('\n')[0] ?? '') : 'damaged'}). Export it again as PNG.`,
+        logoRefusals.unreadable(error instanceof Error ? (error.message.split('\n')[0] ?? '') : 'damaged'),
       );
     }
   });

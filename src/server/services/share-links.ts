@@ -23,6 +23,7 @@ import {
 } from '../queries/share-links';
 import { visibleSite } from '../queries/visible-site';
 import { customerSite } from './customer-page';
+import { shareLinkRefusals } from '../../words/refusals-people';
 
 /** Pages of a site for people who do not sign in: made and ended by a manager, read by whoever has the link. */
 
@@ -64,7 +65,7 @@ export async function makeShareLink(
   const site = found(await visibleSite(tx, siteRef), 'site');
   const expiresAt = wanted.endsOn === null ? null : await endOfDay(tx, site.timeZone, wanted.endsOn);
   if (expiresAt && expiresAt <= from.at) {
-    const message = 'This day is over at the site. Choose a later one, or leave it empty.';
+    const message = shareLinkRefusals.dayOver;
     throw new AppError('invalid', { message, fields: [{ field: 'endsOn', message }] });
   }
   const token = newToken();
@@ -99,8 +100,7 @@ export async function withdrawShareLink(
   address: string,
 ): Promise<ShareLinkItem> {
   const link = await endShareLink(tx, ref, at);
-  if (!link)
-    throw new AppError('not_found', { message: 'There is no such shared page, or it was ended before.' });
+  if (!link) throw new AppError('not_found', { message: shareLinkRefusals.endedBefore });
   await addAuditEntry(tx, {
     organisationId: actor.organisationId,
     personId: actor.personId,
@@ -115,7 +115,7 @@ export async function withdrawShareLink(
 
 const gone = () =>
   new AppError('not_found', {
-    message: 'The link was ended, has run out, or was not copied whole. Ask whoever gave it to you.',
+    message: shareLinkRefusals.notGood,
   });
 
 /**

@@ -12,6 +12,7 @@ import {
   type Span,
   type WatchedZone,
 } from '../queries/shutdown-test-evidence';
+import { testEvidenceWords } from '../../words/refusals-cases';
 
 /** A round that nobody ends is watched no longer, seconds. */
 const LONGEST_ROUND_S = 2 * 3600;
@@ -165,15 +166,13 @@ function watchWords(
   quiet: readonly string[],
   newestAt: Date | null,
 ): string {
-  const only = 'Only the instrument shows what happens.';
-  if (canWatch && telling === 0)
-    return 'The units here tell nothing themselves, according to the type entered. The page shows the inverter’s inputs, which capacitors hold up for a while.';
+  const only = testEvidenceWords.onlyInstrument;
+  if (canWatch && telling === 0) return testEvidenceWords.tellNothing;
   if (canWatch && telling < zone.strings.length)
-    return `Reports arrive. The units of ${zone.strings.length - telling} strings tell nothing themselves: for those only their inputs show something.`;
-  if (canWatch) return 'Reports of the strings arrive.';
-  if (loggers === 0 && newestAt === null) return `No logger reports these strings. ${only}`;
-  if (quiet.length > 0)
-    return `Logger ${quiet.join(' and ')} is not speaking: nothing can be watched until it is back. ${only}`;
-  if (newestAt === null) return `The logger is there, but no unit of these strings has reported yet. ${only}`;
-  return `The logger speaks, but the units are silent: dark, unheard or out of reach. ${only}`;
+    return testEvidenceWords.someTellNothing(zone.strings.length - telling);
+  if (canWatch) return testEvidenceWords.reportsArrive;
+  if (loggers === 0 && newestAt === null) return testEvidenceWords.noLogger(only);
+  if (quiet.length > 0) return testEvidenceWords.loggersQuiet(quiet.join(' and '), only);
+  if (newestAt === null) return testEvidenceWords.noneReportedYet(only);
+  return testEvidenceWords.unitsSilent(only);
 }

@@ -16,6 +16,7 @@ import { visibleSite, type VisibleSite } from '../queries/visible-site';
 import { fingerprintOf } from '../reports/fingerprint';
 import { signedContent } from './shutdown-test-content';
 import { readEvidence, readWatch } from './shutdown-test-evidence';
+import { testPageWords } from '../../words/refusals-cases';
 
 /** People who wrote to a test within this time are at it. */
 const AT_IT_MS = 30 * 60_000;
@@ -48,7 +49,7 @@ export async function readDraft(tx: Tx, head: TestHead, now: Date): Promise<Draf
       string: r.string,
       name: r.name,
       result: r.result,
-      words: `Not tested again: the result of ${at.slice(0, 10)} stands.`,
+      words: testPageWords.stands(at.slice(0, 10)),
       test: from.test,
       at,
     };

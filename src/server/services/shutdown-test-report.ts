@@ -14,6 +14,7 @@ import { visibleSite } from '../queries/visible-site';
 import { fingerprintOf } from '../reports/fingerprint';
 import { signedContent } from './shutdown-test-content';
 import { readEvidence } from './shutdown-test-evidence';
+import { testReportThings } from '../../words/refusals-cases';
 
 /** Tests of a site by zone, signed, under way and ended. @throws AppError not_found */
 export async function shutdownTestList(tx: Tx, siteRef: string, now: Date): Promise<ShutdownTestList> {
@@ -32,7 +33,7 @@ export async function testState(tx: Tx, siteRef: string, ref: string): Promise<'
   const signed = await signedTest(tx, { ref });
   if (signed?.siteRef === site.ref) return 'signed';
   const head = await testHead(tx, ref);
-  found(head?.siteRef === site.ref ? head : null, 'shutdown test');
+  found(head?.siteRef === site.ref ? head : null, testReportThings.test);
   return 'draft';
 }
 
@@ -55,7 +56,7 @@ const EARLIER_READINGS = z.looseObject({
  * @throws AppError not_found
  */
 export async function shutdownTestReport(tx: Tx, ref: string, now = new Date()): Promise<ShutdownTestReport> {
-  const row = found(await signedTest(tx, { ref }), 'signed shutdown test');
+  const row = found(await signedTest(tx, { ref }), testReportThings.signed);
   const site = found(await visibleSite(tx, row.siteRef), 'site');
   const record = signedContent(row.detail);
   const recomputed = record ? fingerprintOf(row.detail) : null;

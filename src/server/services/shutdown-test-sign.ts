@@ -10,6 +10,7 @@ import { closeDraft, insertSigned, standingTests } from '../queries/shutdown-tes
 import { fingerprintOf } from '../reports/fingerprint';
 import { readDraft, type Draft } from './shutdown-test-page';
 import { openHead } from './shutdown-test-write';
+import { testSignRefusals } from '../../words/refusals-cases';
 
 /**
  * Signs a test: what the page showed, with the person's name and the time, fingerprinted and never changed again.
@@ -31,7 +32,7 @@ export async function signShutdownTest(
   if (fault) throw new AppError('conflict', { message: fault });
   if (fingerprintOf(draft.content) !== given.fingerprint)
     throw new AppError('conflict', {
-      message: 'Something has come in since this page was shown. Look at it again, then sign.',
+      message: testSignRefusals.cameInMeanwhile,
     });
   await confirmPassword(actor.personId, given.password);
   const signed: SignedTest = {
@@ -83,12 +84,12 @@ export async function signShutdownTest(
 
 /** What must be done before a signature; null: nothing. */
 function notReady({ content: { record } }: Draft): string | null {
-  if (record.plan === null) return 'Say first who is there and what is tested.';
-  if (record.caution === null) return 'Read and accept the caution first.';
-  if (!record.rounds.some((r) => r.ended !== null)) return 'No round has been watched to its end yet.';
+  if (record.plan === null) return testSignRefusals.sayWhoAndWhat;
+  if (record.caution === null) return testSignRefusals.acceptCaution;
+  if (!record.rounds.some((r) => r.ended !== null)) return testSignRefusals.noRound;
   const open = openRound(record);
-  if (open !== undefined) return `Round ${open + 1} is still under way: end it first.`;
+  if (open !== undefined) return testSignRefusals.roundUnderWay(open + 1);
   if (record.rounds.some((r) => r.readings.some((x) => x.struck === null)) && record.provedAfter === null)
-    return 'Prove the instrument on a known source again, and say whether it was right.';
+    return testSignRefusals.proveAgain;
   return null;
 }

@@ -18,6 +18,7 @@ import {
 } from '../queries/shutdown-tests';
 import { zoneOf } from '../queries/shutdown-test-evidence';
 import { visibleSite } from '../queries/visible-site';
+import { testWriteRefusals } from '../../words/refusals-cases';
 
 /** A phone's clock, corrected by the server's, may run ahead by so much, milliseconds. */
 const AHEAD_MS = 120_000;
@@ -66,7 +67,7 @@ export async function startShutdownTest(
       ...(open ? { fields: [{ field: 'open', message: open.ref }] } : {}),
     });
   }
-  const head = found(await testHead(tx, ref), 'shutdown test');
+  const head = found(await testHead(tx, ref), testWriteRefusals.test);
   await audit(tx, actor, head, 'shutdown_test.start', address, {
     zone: zone.name,
     follows: follows?.ref ?? null,
@@ -77,14 +78,14 @@ export async function startShutdownTest(
 
 /** The draft, locked, if it can still be written to. */
 export async function openHead(tx: Tx, ref: string): Promise<TestHead> {
-  const head = found(await testHead(tx, ref, true), 'shutdown test');
+  const head = found(await testHead(tx, ref, true), testWriteRefusals.test);
   if (head.signedId !== null)
     throw new AppError('conflict', {
-      message: 'This test is signed and stays as it is. Start a new one that supersedes it.',
+      message: testWriteRefusals.signedStays,
     });
   if (head.closedAt !== null)
     throw new AppError('conflict', {
-      message: `This test was ended by ${head.closedBy}: ${head.closeReason}. Start a new one.`,
+      message: testWriteRefusals.ended(head.closedBy ?? '', head.closeReason ?? ''),
     });
   return head;
 }
@@ -112,8 +113,8 @@ export async function addActs(
     if (known.has(one.id)) continue;
     if (Date.parse(one.at) > now.getTime() + AHEAD_MS)
       throw new AppError('invalid', {
-        message: `The time of entry ${i + 1} lies in the future: set the phone's clock, then try again.`,
-        fields: [{ field: `acts.${i}.at`, message: 'lies in the future' }],
+        message: testWriteRefusals.entryAhead(i + 1),
+        fields: [{ field: `acts.${i}.at`, message: testWriteRefusals.inTheFuture }],
       });
     const fault = faultOfAct(recordOf(acts), one.act);
     if (fault)

@@ -5,6 +5,7 @@ import { asSignIn } from '../db/transaction';
 import { AppError } from '../errors';
 import { credentialsOf, markSeen } from '../queries/people';
 import { takeSecondFactor } from './my-account';
+import { signInRefusals } from '../../words/refusals-people';
 
 /** Opens a session; the answer to a wrong password and to an unknown address is one and the same. */
 export async function signIn(
@@ -24,15 +25,14 @@ export async function signIn(
   const right = await verifyPassword(person?.passwordHash, given.password);
   if (!person || !right)
     throw new AppError('unauthenticated', {
-      message:
-        'E-mail and password do not belong together. Check both, or have a letter sent that sets a new password.',
+      message: signInRefusals.notTogether,
     });
   if (person.secondFactorSince) {
     const { code } = given;
     if (!code)
       throw new AppError('unauthenticated', {
-        message: 'Type the code that your authenticator shows now, or one of your recovery codes.',
-        fields: [{ field: 'code', message: 'Type the code of your authenticator.' }],
+        message: signInRefusals.typeCodeOrRecovery,
+        fields: [{ field: 'code', message: signInRefusals.typeCode }],
       });
     await asSignIn((tx) => takeSecondFactor(tx, person.id, code, at));
   }

@@ -12,6 +12,7 @@ import { stringFacts } from '../queries/string-facts';
 import { captureSnapshot } from './capture-snapshot';
 import type { Recorded } from './record-check';
 import { refTaken } from './recorded';
+import { signOffRefusals } from '../../words/refusals-as-built';
 
 /**
  * Signs the install checks of a string as they stand. What the person looked at must be what is there.
@@ -30,19 +31,19 @@ export async function signOffString(
   const sheet = await captureSnapshot(tx, facts.siteRef, person, call.now);
   const on = found(
     sheet.strings.find((s) => s.id === stringRef),
-    'string with slots',
+    signOffRefusals.stringWithSlots,
   );
   if (on.signOff?.ref === input.ref && on.signOff.fingerprint === input.fingerprint)
     return { record: { stringId: stringRef, ...on.signOff }, made: false };
   if (on.fingerprint !== input.fingerprint)
     throw new AppError('conflict', {
-      message: `Checks of ${string.name} were recorded since you looked. Look at them again, then sign.`,
-      fields: [{ field: 'body.fingerprint', message: 'Not of the records that are here now.' }],
+      message: signOffRefusals.recordedSince(string.name),
+      fields: [{ field: 'body.fingerprint', message: signOffRefusals.notTheseRecords }],
     });
   const state = signOffState(on.checks.map(standingOf), checkContext(sheet, stringRef));
   if (!state.maySign)
     throw new AppError('conflict', {
-      message: `${string.name} can’t be signed off: ${state.blocks.map((b) => b.words).join(' ')}`,
+      message: signOffRefusals.blocked(string.name, state.blocks.map((b) => b.words).join(' ')),
       fields: state.blocks.map((b) => ({ field: b.check, message: `${b.words} ${b.remedy}` })),
     });
   const written = await insertSignOff(tx, {

@@ -7,9 +7,9 @@ import { eventsOfSite, loggersNow, siteFacts, zonesNow, type EventsWanted } from
 import { sitesNow } from '../queries/sites-now';
 import { visibleSite } from '../queries/visible-site';
 import { causesNow } from './causes';
+import { sitePageRefusals } from '../../words/refusals-cases';
 
-const noSuchSite = () =>
-  new AppError('not_found', { message: 'No such site. Check the link, or go back to the fleet.' });
+const noSuchSite = () => new AppError('not_found', { message: sitePageRefusals.noSuchSite });
 
 /**
  * Everything that a site's page shows now. A fixed number of statements, however many strings.

@@ -5,6 +5,7 @@ import { AppError, found } from '../errors';
 import { addAuditEntry } from '../queries/people';
 import { addRollCallEvent, announceRollCall, latestRollCall, openRollCall } from '../queries/roll-call';
 import { visibleSite } from '../queries/visible-site';
+import { startRollCallRefusals } from '../../words/refusals-cases';
 
 /**
  * Opens the roll call of a site: the loggers are asked to listen, nothing else. A unit that is heard begins to
@@ -30,8 +31,8 @@ export async function startRollCall(
     const open = await latestRollCall(tx, site.id);
     throw new AppError('conflict', {
       message: open
-        ? `The roll call at ${site.name} is running already: ${open.startedBy} started it, with ${open.personOnSite} on site. Watch that one, or have it stopped first.`
-        : `The roll call at ${site.name} was started by somebody else at this moment. Reload the page.`,
+        ? startRollCallRefusals.running(site.name, open.startedBy, open.personOnSite)
+        : startRollCallRefusals.startedMeanwhile(site.name),
     });
   }
   await addRollCallEvent(tx, {

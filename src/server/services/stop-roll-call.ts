@@ -5,6 +5,7 @@ import { AppError, found } from '../errors';
 import { addAuditEntry } from '../queries/people';
 import { addRollCallEvent, announceRollCall, closeRollCall } from '../queries/roll-call';
 import { visibleSite } from '../queries/visible-site';
+import { stopRollCallRefusals } from '../../words/refusals-cases';
 
 /**
  * Ends the open roll call of a site; what was heard stays heard.
@@ -20,7 +21,7 @@ export async function stopRollCall(
   const run = await closeRollCall(tx, { siteId: site.id, personId: actor.personId });
   if (!run?.stoppedAt)
     throw new AppError('conflict', {
-      message: `No roll call is running at ${site.name}: it was stopped already.`,
+      message: stopRollCallRefusals.stopped(site.name),
     });
   await addRollCallEvent(tx, {
     organisationId: site.organisationId,

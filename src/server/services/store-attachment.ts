@@ -14,6 +14,7 @@ import { tellSiteChanged } from '../queries/live-notices';
 import { visibleSite } from '../queries/visible-site';
 import type { Recorded } from './record-check';
 import { clockFault, refTaken, refuseFaults } from './recorded';
+import { attachmentRefusals } from '../../words/refusals-as-built';
 
 /** A file that came in, as it will be kept. */
 export interface ReceivedFile {
@@ -55,10 +56,7 @@ export function readReceived(
     if (kind === null) throw refused(`${query.name}: ${fault}`);
     if (kind !== 'pdf')
       return { mediaType: 'image/jpeg', ...(await readPhoto(file.path, query.keepPlace === 'yes')) };
-    if (query.subject !== 'connector_pair')
-      throw refused(
-        `${query.name}: This is a PDF. Documents are taken as evidence for connector pairs only; here send a JPEG, PNG or WebP picture.`,
-      );
+    if (query.subject !== 'connector_pair') throw refused(attachmentRefusals.pdf(query.name));
     return {
       mediaType: 'application/pdf',
       data: await readFile(file.path),
@@ -84,12 +82,12 @@ export async function storeAttachment(
   const site = found(await visibleSite(tx, siteRef), 'site');
   if (query.subject === 'connector_pair' && !mayUse(actor.role, 'connector_evidence.record'))
     throw new AppError('forbidden', {
-      message: `The role ${actor.role} does not record evidence for connectors. Ask a manager.`,
+      message: attachmentRefusals.roleRecordsNone(actor.role),
     });
   const string =
     query.string === undefined
       ? null
-      : found(await lockString(tx, site.id, query.string), 'string at this site');
+      : found(await lockString(tx, site.id, query.string), attachmentRefusals.stringHere);
   const clock = clockFault(query.at, now);
   refuseFaults(clock ? [{ ...clock, field: 'query.at' }] : []);
   const sha256 = createHash('sha256').update(file.data).digest();

@@ -8,14 +8,14 @@ import { worksOfString } from '../queries/annotations';
 import type { StringFacts } from '../queries/string-facts';
 import { commandsOfZone, eventsOfString, type HistoryPoint } from '../queries/string-history';
 import { staysOf } from '../queries/string-units';
+import { axisWords } from '../../words/refusals-history';
 
 /** What every chart over a string's time shares: how finely it is read, nights, marks, gaps. */
 
 const HOUR_S = 3600;
 const DAY_S = 24 * HOUR_S;
 
-export const noSuchString = (): AppError =>
-  new AppError('not_found', { message: 'No such string. Check the link, or go back to the fleet.' });
+export const noSuchString = (): AppError => new AppError('not_found', { message: axisWords.noSuchString });
 
 export interface Plan {
   from: Date;
@@ -104,9 +104,9 @@ function moveMarks(moves: readonly Move[]): ChartMark[] {
     to: null,
     words:
       together.length >= MANY_MOVES
-        ? `${together.length} units replaced or taken out`
+        ? axisWords.unitsExchanged(together.length)
         : together
-            .map((m) => (m.in ? `Unit at ${m.position} replaced` : `Unit at ${m.position} taken out`))
+            .map((m) => (m.in ? axisWords.unitReplaced(m.position) : axisWords.unitTakenOut(m.position)))
             .join(', '),
     tone: 'slate' as const,
   }));
@@ -139,7 +139,7 @@ export async function marksOf(tx: Tx, facts: StringFacts, plan: Plan, now: Date)
   const works = (await worksOfString(tx, facts, plan)).map((w): ChartMark => ({
     from: Math.max(from, w.from),
     to: Math.min(plan.to.getTime() / 1000, w.to),
-    words: `Planned work: ${w.reason}`,
+    words: axisWords.plannedWork(w.reason),
     tone: 'slate',
   }));
   const moves = moveMarks(await movesOf(tx, facts.id, plan));

@@ -10,6 +10,7 @@ import { dayBounds } from '../queries/string-history';
 import { conductAt, unitQuarters } from '../queries/string-units';
 import { noSuchString } from './string-axis';
 import { loopOf } from './string-loop';
+import { explanationWords } from '../../words/refusals-history';
 
 /** So many days back the newest judged one is looked for. */
 const JUDGED_WITHIN = 14;
@@ -61,7 +62,7 @@ export async function readExplanations(
   return {
     day: newest?.day ?? null,
     outcome: newest?.outcome ?? null,
-    words: finding?.words ?? 'This string’s output was not judged yet: it is after the sunset of each day.',
+    words: finding?.words ?? explanationWords.notJudgedYet,
     method: finding?.method ?? null,
     lossKWh: finding?.lossKWh ?? null,
     threshold: finding ? { ratio: finding.threshold.ratio, source: finding.threshold.source } : null,

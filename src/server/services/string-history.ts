@@ -20,6 +20,7 @@ import {
   type HistoryPoint,
 } from '../queries/string-history';
 import { gapFrom, marksOf, nightsOf, noSuchString, planFor, withGaps, type Plan } from './string-axis';
+import { historyWords } from '../../words/refusals-history';
 
 const DAYS: Record<HistoryRange, number> = { day: 1, week: 7, month: 31, year: 366 };
 const DAY_S = 86_400;
@@ -96,10 +97,9 @@ function lightModel(
 }
 
 const FROM_WORDS: Record<ExpectedHistory['from'], (facts: StringFacts, model: string) => string> = {
-  siblings: (f) => `other strings on the ${planeWords(f.planeName)}`,
-  siblings_and_model: (f, model) =>
-    `other strings on the ${planeWords(f.planeName)}; where they tell nothing, ${model}`,
-  model: (_, model) => `${model}, so the band is wide`,
+  siblings: (f) => historyWords.others(planeWords(f.planeName)),
+  siblings_and_model: (f, model) => historyWords.othersElse(planeWords(f.planeName), model),
+  model: (_, model) => historyWords.wideBand(model),
   nothing: () => '',
 };
 
@@ -150,7 +150,7 @@ async function comparedWith(
   });
   const each = query.siblings === 'each' && !nothing ? await siblingLines(tx, siblings, plan, options) : [];
   const model =
-    quantity === 'voltage' ? 'the datasheet under a clear sky' : 'the irradiance sensor and the datasheet';
+    quantity === 'voltage' ? historyWords.datasheetUnderClearSky : historyWords.sensorAndDatasheet;
   return {
     expected: {
       at: band.at,
@@ -189,8 +189,8 @@ function notesOf(
   if (facts.kind === 'shutdown_only')
     notes.push(
       facts.inputStrings > 1
-        ? `Measured at the input, which ${facts.inputStrings} strings share: their common ${query.quantity === 'voltage' ? 'voltage' : query.quantity === 'current' ? 'sum of currents' : 'sum of power'}.`
-        : 'Measured at the input: units of this type report nothing themselves.',
+        ? historyWords.atSharedInput(facts.inputStrings, query.quantity)
+        : historyWords.atInput,
     );
   if (siblings.length === 0)
     notes.push(
@@ -246,12 +246,11 @@ export async function readHistory(
     if (quarters.length > 0) {
       plan = coarser;
       points = quarters;
-      kept.push('Single reports are no longer kept for this day: means of 15 minutes are shown.');
+      kept.push(historyWords.meansOnly);
     }
   }
   const imported = await importedOver(tx, facts, plan, query.quantity, points);
-  if (plan.resolution === 'day' && query.quantity === 'current')
-    kept.push('A day has no single current: choose a day, a week or a month.');
+  if (plan.resolution === 'day' && query.quantity === 'current') kept.push(historyWords.noSingleCurrent);
   const siblings = await siblingsOf(tx, facts);
   const compared = await comparedWith(tx, facts, plan, query, siblings);
   return {
@@ -270,7 +269,7 @@ export async function readHistory(
     notes: [
       ...kept,
       ...notesOf(facts, query, siblings, compared.expected.from !== ''),
-      ...(imported.length > 0 ? ['Dashed grey: read from an imported file, not by Wakeline.'] : []),
+      ...(imported.length > 0 ? [historyWords.imported] : []),
     ],
   };
 }
@@ -298,10 +297,8 @@ function partOf(query: HistoryQuery): { from: Date; to: Date } | null {
   if (from === undefined && to === undefined) return null;
   if (from === undefined || to === undefined || to <= from)
     throw new AppError('invalid', {
-      message: 'Give both ends of the part, the earlier one as "from".',
-      fields: [
-        { field: from === undefined ? 'query.from' : 'query.to', message: 'give both, from before to' },
-      ],
+      message: historyWords.giveBothEnds,
+      fields: [{ field: from === undefined ? 'query.from' : 'query.to', message: historyWords.giveBoth }],
     });
   return { from: new Date(from * 1000), to: new Date(to * 1000) };
 }

@@ -15,6 +15,7 @@ import { siblingsOf, stringFacts, stringsOnInput, type StringFacts } from '../qu
 import { newestLoopFits } from '../queries/string-units';
 import { dayBounds } from '../queries/string-history';
 import { noSuchString } from './string-axis';
+import { loopWords } from '../../words/refusals-history';
 
 /** Days that a fit rests on. */
 const DAYS = 3;
@@ -43,7 +44,7 @@ export async function loopOf(
   const rows = told ? await loopRows(tx, onInput, span, facts.reportIntervalS / 2) : [];
   const of = (id: number) => rows.filter((r) => r.stringId === id).map(loopReading);
   const samples = loopSamples(of(facts.id), onInput.filter((id) => id !== facts.id).map(of), facts.slots);
-  const fit = told ? fitLoop(samples) : 'the units of this string do not measure their output';
+  const fit = told ? fitLoop(samples) : loopWords.noOutput;
   const siblings = await siblingsOf(tx, facts);
   const past = (await pastFits(tx, facts.siteId, fromDay)).find((p) => p.stringId === facts.id)?.fit ?? null;
   const finding = judgeLoop(fit, {

@@ -8,6 +8,7 @@ import { commandsOfZone, planeLight, siblingHistory, stringQuarters } from '../q
 import { conductAt, frameAt, inputAt, staysOf, unitQuarters, type FrameThen } from '../queries/string-units';
 import { noSuchString } from './string-axis';
 import { voltageModel } from './string-history';
+import { momentWords } from '../../words/refusals-history';
 
 /** Reports so many intervals before a moment still tell of it. */
 const INTERVALS = 3;
@@ -49,11 +50,11 @@ async function typicalAt(tx: Tx, facts: StringFacts, at: Date, quarterly: boolea
     },
   );
   const step = steps[0];
-  if (step) return { voltage: step.typical, from: `the other strings on the ${planeWords(facts.planeName)}` };
+  if (step) return { voltage: step.typical, from: momentWords.others(planeWords(facts.planeName)) };
   const modelled = voltageModel(facts)(at.getTime() / 1000);
   return {
     voltage: modelled,
-    from: modelled === null ? '' : 'a clear sky and the module’s datasheet',
+    from: modelled === null ? '' : momentWords.clearSkyAndDatasheet,
   };
 }
 
@@ -166,14 +167,8 @@ export async function readMoment(tx: Tx, ref: string, atS: number): Promise<Stri
     inForce,
     light: { poaGlobal: light?.poaGlobal ?? null, temperatureModule: light?.temperatureModule ?? null },
     notes: [
-      ...(source === 'quarter'
-        ? [
-            unitsKnown
-              ? 'Single reports are no longer kept for this time: means of 15 minutes, states by their voltage.'
-              : 'Of this time only the string’s mean voltage over 15 minutes is kept.',
-          ]
-        : []),
-      ...(source === 'nothing' ? ['Nothing was reported within three intervals before this moment.'] : []),
+      ...(source === 'quarter' ? [unitsKnown ? momentWords.meansOnly : momentWords.meanOnly] : []),
+      ...(source === 'nothing' ? [momentWords.nothingReported] : []),
     ],
   };
 }

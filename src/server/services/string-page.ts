@@ -7,6 +7,7 @@ import { planeWords } from '../../domain/output/plane-words';
 import { openCaseOf, siblingsOf, stringFacts, stringNames, type StringFacts } from '../queries/string-facts';
 import { dayBounds, energyAgainst, eventsOfString } from '../queries/string-history';
 import { noSuchString } from './string-axis';
+import { stringPageWords } from '../../words/refusals-history';
 
 const EVENT_DAYS = 14;
 /** Under this share of what the siblings made, a string is not called short. */
@@ -45,7 +46,7 @@ async function lostToday(
   const due = median(others) * facts.units;
   const wh = due - own.wh;
   return wh > due * LOSS_FROM
-    ? { wh, since: from.toISOString(), against: `the other strings on the ${planeWords(facts.planeName)}` }
+    ? { wh, since: from.toISOString(), against: stringPageWords.others(planeWords(facts.planeName)) }
     : null;
 }
 

@@ -5,6 +5,7 @@ import { AppError } from '../errors';
 import { personOfLetter, saveRules, type SignedOutPerson } from '../queries/notice-choices';
 import { addAuditEntry } from '../queries/people';
 import { isSigned, readToken } from './notice-links';
+import { unsubscribeWords } from '../../words/refusals-people';
 
 /** The way out of letters: by the link at their foot, signed out too, and back again. */
 
@@ -21,8 +22,7 @@ export interface WayOut {
 
 const gone = () =>
   new AppError('not_found', {
-    message:
-      'This link ends no letters: it was cut short, or the account has ended. Sign in and choose under “Your account”.',
+    message: unsubscribeWords.endsNone,
   });
 
 /** A wrong token counts against whoever tries; a right one never, however many letters one mail provider answers for. */
@@ -46,7 +46,7 @@ async function opened(
   if (parts.of === 'gathered')
     return {
       person,
-      what: 'The day’s letter',
+      what: unsubscribeWords.dayLetter,
       kinds: mine.filter((kind) => howOf(kind, person.role, person.rules) === 'digest'),
     };
   const kinds = mine.filter((kind) => kind === parts.of);

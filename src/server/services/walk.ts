@@ -15,12 +15,13 @@ import {
   type WalkSiteFacts,
   type WalkStringRow,
 } from '../queries/walk';
+import { walkLights } from '../../words/refusals-as-built';
 
 const LIGHT_WORDS: Record<ReadingLight, string> = {
-  bright: 'in bright light',
-  dull: 'in dull light',
-  snow: 'under snow',
-  night: 'at night',
+  bright: walkLights.bright,
+  dull: walkLights.dull,
+  snow: walkLights.snow,
+  night: walkLights.night,
 };
 /** W/m² in the plane from which light is called bright. */
 const BRIGHT_FROM = 350;

@@ -20,6 +20,7 @@ import {
 import { choicesLine, greetingOf, wayOutOf } from './notice-letters';
 import { recipientOf } from './notice-people';
 import { signedHeaders } from './webhook-signature';
+import { webhookLetters } from '../../words/refusals-people';
 
 /** Makes the calls that are due. Each is made at least once; its identifier is the same at every try. */
 
@@ -104,8 +105,8 @@ async function makeCall(call: DueCall, now: () => Date, limits: CallLimits): Pro
       (delivered
         ? null
         : answer.status !== null && answer.status >= 300 && answer.status < 400
-          ? 'it answered with a redirect, which is not followed: enter the address that it leads to'
-          : `it answered ${answer.status}`),
+          ? webhookLetters.redirected
+          : webhookLetters.answered(answer.status ?? 0)),
     // a test is made once: somebody looks at it
     notBefore: wait === null || call.kind === 'test' ? null : new Date(at.getTime() + wait * MINUTE_MS),
   };
@@ -122,8 +123,8 @@ async function switchOff(tx: Tx, call: DueCall, why: string, at: Date): Promise<
   const hook = await disableWebhook(tx, call.webhookId, at);
   if (!hook) return;
   const eventKey = `webhook:${hook.ref}:${at.toISOString()}`;
-  const headline = `The webhook “${hook.name}” is switched off`;
-  const body = `Every call failed for ${DISABLED_AFTER_DAYS} days, the last because ${why}. What happens from now on is not told to it until you switch it on again.`;
+  const headline = webhookLetters.switchedOff(hook.name);
+  const body = webhookLetters.failedForDays(DISABLED_AFTER_DAYS, why);
   const matter = { kind: 'webhook', siteId: null, byPerson: null, inProductOnly: false } as const;
   const noticed: number[] = [];
   for (const person of await recipients(tx, { organisationIds: [call.organisationId] })) {
@@ -152,9 +153,9 @@ async function switchOff(tx: Tx, call: DueCall, why: string, at: Date): Promise<
       greeting: greetingOf(person),
       finding: headline,
       paragraphs: [body],
-      figures: [['It was called at', hook.url]],
-      action: { words: 'See its calls', href: publicUrl() + href },
-      footer: `You get this letter because you manage ${person.organisationName} in Wakeline: “${KINDS.webhook.name}”. ${choicesLine()}`,
+      figures: [[webhookLetters.calledAt, hook.url]],
+      action: { words: webhookLetters.seeCalls, href: publicUrl() + href },
+      footer: webhookLetters.whyThisLetter(person.organisationName, KINDS.webhook.name, choicesLine()),
       wayOut,
     });
     await addMessage(tx, {

@@ -29,6 +29,7 @@ import { addDelivery } from '../queries/webhooks-send';
 import type { CallBody } from './webhook-calls';
 import { callsWithin } from './webhook-send';
 import { newSecret } from './webhook-signature';
+import { webhookRefusals } from '../../words/refusals-people';
 
 /** Webhooks as managers keep them. */
 
@@ -86,7 +87,7 @@ export async function makeWebhook(
   checkUrl(body.url);
   if ((await webhooksOf(tx)).length >= MOST)
     throw new AppError('conflict', {
-      message: `There are ${MOST} webhooks already. Remove one, or let one carry more kinds.`,
+      message: webhookRefusals.tooMany(MOST),
     });
   const secret = newSecret();
   const id = await addWebhook(tx, {
@@ -153,8 +154,8 @@ export async function testWebhook(
     recordedAt: at.toISOString(),
     site: null,
     string: null,
-    headline: 'A test call',
-    body: 'Somebody asked for it on the page of this webhook. Nothing has happened.',
+    headline: webhookRefusals.testCall,
+    body: webhookRefusals.testReason,
     detail: {},
     href: `${publicUrl()}${paths.webhook(ref)}`,
   };
@@ -184,7 +185,7 @@ export async function resendCall(
   const first = found(await deliveryByRef(tx, ref), 'call');
   if (!first.active && first.kind !== 'test')
     throw new AppError('conflict', {
-      message: 'The webhook is switched off. Switch it on, then send again.',
+      message: webhookRefusals.switchOnFirst,
     });
   const delivery = randomUUID();
   const body = { ...(JSON.parse(first.body) as CallBody), delivery };

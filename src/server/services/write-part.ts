@@ -17,6 +17,7 @@ import {
 } from '../queries/as-built-parts';
 import type { AsBuiltSite } from '../queries/as-built-site';
 import { refuseFaults } from './as-built-words';
+import { writePartRefusals } from '../../words/refusals-as-built';
 
 /** From a part's fields to the rows that keep them. */
 
@@ -116,10 +117,8 @@ export async function writeChanges(
     const [used] = await inputsInUse(tx, rowId, inputs);
     if (used) {
       const why =
-        used.strings.length > 0
-          ? `${used.strings.length === 1 ? 'string' : 'strings'} ${used.strings.join(', ')} ${used.strings.length === 1 ? 'is' : 'are'} on it`
-          : 'it has reported readings';
-      const message = `Input ${used.number} can't go: ${why}.`;
+        used.strings.length > 0 ? writePartRefusals.stringsOnIt(used.strings) : writePartRefusals.reported;
+      const message = writePartRefusals.inputStays(used.number, why);
       throw new AppError('conflict', { message, fields: [{ field: 'values.inputs', message }] });
     }
     await setInputs(tx, site.id, rowId, inputs);
@@ -137,7 +136,7 @@ function strandedStrings(parts: Omit<AsBuilt, 'at'>, transmitter: string, whole:
     (s) => !reports(s.kind) && !served.includes(s.id) && s.transmitters.every((t) => t === transmitter),
   );
   if (stranded.length === 0) return;
-  const message = `Strings that it serves: ${stranded.map((s) => s.name).join(', ')} would hear no transmitter, and shutdown-only units need one. Give them another first.`;
+  const message = writePartRefusals.strandedStrings(stranded.map((s) => s.name).join(', '));
   throw new AppError('invalid', { message, fields: [{ field: 'values.strings', message }] });
 }
 
@@ -146,14 +145,12 @@ export function stringFaults(parts: Omit<AsBuilt, 'at'>, values: Values): { key:
   const type = parts.catalogue.unitTypes.find((t) => t.id === values.unitType);
   if (!type) return [];
   if (reports(type.kind) && (values.logger === null || values.logger === undefined))
-    return [
-      { key: 'logger', message: `"${type.name}" units report, so the string needs a logger. Choose one.` },
-    ];
+    return [{ key: 'logger', message: writePartRefusals.needsLogger(type.name) }];
   if (!reports(type.kind) && listOf(values.transmitters).length === 0)
     return [
       {
         key: 'transmitters',
-        message: `"${type.name}" units tell nothing and hear a keep-alive, so the string needs a transmitter. Choose at least one.`,
+        message: writePartRefusals.needsTransmitter(type.name),
       },
     ];
   return [];
@@ -182,10 +179,8 @@ async function writeString(
     const [used] = await slotsInUse(tx, [{ stringId, slots }]);
     if (used) {
       const why =
-        used.serial === null
-          ? 'a unit there has reported'
-          : `${used.serial} sits there. Take it out first, or move it`;
-      const message = `Slots: position ${used.position} can't go: ${why}.`;
+        used.serial === null ? writePartRefusals.slotReported : writePartRefusals.slotTaken(used.serial);
+      const message = writePartRefusals.slotStays(used.position, why);
       throw new AppError('conflict', { message, fields: [{ field: 'values.slots', message }] });
     }
     const last = string?.slots.at(-1)?.moduleType;
@@ -200,8 +195,8 @@ async function writeString(
           ).get(last));
     if (type === undefined || type === null)
       throw new AppError('invalid', {
-        message: 'Choose the module type of the new slots.',
-        fields: [{ field: 'values.moduleType', message: 'Choose the module type of the new slots.' }],
+        message: writePartRefusals.chooseModuleType,
+        fields: [{ field: 'values.moduleType', message: writePartRefusals.chooseModuleType }],
       });
     await setSlots(tx, site.id, [{ stringId, slots, moduleTypeId: type }]);
   }

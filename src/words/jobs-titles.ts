@@ -1,0 +1,15 @@
+export const jobTitles = {
+  sums: 'Sum reports up to quarters and days',
+  causesOfSite: 'Find causes at a site when its verdicts change',
+  causes: 'Look after every open cause',
+  sunsets: 'See where the sun has set and the day can be judged',
+  judgeDay: "Judge a site's day: low output, weak units, wrong strings, resistance",
+  tell: 'Tell people and other systems of what happened',
+  gatherLetters: 'Write the letters that gather a day or a night',
+  callOthers: 'Call other systems',
+  sendLetters: 'Send letters that are due',
+  lookAgain: 'Look again at closed cases; open those again that did not hold',
+  roofLetters: 'Write the weekly and monthly letters about roofs',
+  makeRoom: 'Make room for coming days, give up readings past their time',
+  pack: 'Pack the readings of days that are some days old',
+};
