@@ -1,9 +1,9 @@
 import { createHash } from 'node:crypto';
 import { NodePostgresAdapter } from '@lucia-auth/adapter-postgresql';
 import { Lucia, TimeSpan, type Adapter, type DatabaseSession, type Session, type User } from 'lucia';
+import type { Pool } from 'pg';
 import type { Actor, Role } from '../../domain/access/permissions';
 import { config } from '../config';
-import type { Pool } from 'pg';
 import { signInPool } from '../db/pools';
 import { personOfSession } from '../queries/people';
 import { describeSession } from '../queries/sessions';

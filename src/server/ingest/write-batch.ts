@@ -16,13 +16,19 @@ import type { Batch } from './batch';
 export const ROLLED_UP_AFTER_S = 90;
 const DAY_S = 86_400;
 
-const dayOf = (epochS: number): string =>
-  new Date(epochS * 1000).toISOString().slice(0, 10).replaceAll('-', '');
+/** Days since the epoch: every frame is asked for its day. */
+const dayOf = (epochS: number): number => Math.floor(epochS / DAY_S);
+const daysOf = (names: ReadonlySet<string>): Set<number> =>
+  new Set(
+    [...names].map(
+      (n) => Date.UTC(Number(n.slice(0, 4)), Number(n.slice(4, 6)) - 1, Number(n.slice(6))) / 1000 / DAY_S,
+    ),
+  );
 
 /** The days that take frames and those that take other reports, as far as this connection knows. */
 export class Days {
-  private frames: ReadonlySet<string> = new Set();
-  private reports: ReadonlySet<string> = new Set();
+  private frames: ReadonlySet<number> = new Set();
+  private reports: ReadonlySet<number> = new Set();
 
   /** Makes today's neighbours where the job has not yet, and learns which days there are. */
   async refresh(client: pg.ClientBase, nowS: number): Promise<void> {
@@ -31,7 +37,9 @@ export class Days {
   }
 
   private async learn(client: pg.ClientBase): Promise<void> {
-    ({ frames: this.frames, reports: this.reports } = await partitionDays(client));
+    const { frames, reports } = await partitionDays(client);
+    this.frames = daysOf(frames);
+    this.reports = daysOf(reports);
   }
 
   /** False for a day that is packed, or has no partition. */
@@ -45,7 +53,7 @@ export class Days {
 
   /** Makes the partitions of these reports' times where they lie within what is kept. */
   async ensure(client: pg.ClientBase, times: readonly number[], nowS: number): Promise<void> {
-    const missing = new Map<string, number>();
+    const missing = new Map<number, number>();
     for (const at of times) if (!this.takesReports(at)) missing.set(dayOf(at), at);
     for (const at of missing.values())
       if (at > nowS - config().RAW_KEPT_DAYS * DAY_S)
