@@ -160,8 +160,8 @@ const RATIO_KEPT_MS = 15 * 60_000;
 const ratiosKept = new Map<number, { untilMs: number; ratio: number | null }>();
 
 /**
- * Performance ratio (IEC 61724-1: final yield over reference yield) of the last 30 days, over the quarters whose plane
- * irradiance was measured; null without a sensor or with less than 5 kWh/m².
+ * Performance ratio (IEC 61724-1: final yield over reference yield) of the last 30 days as they are rolled up, over the
+ * quarters whose plane irradiance was measured; null without a sensor or with less than 5 kWh/m².
  */
 async function performanceRatios(
   tx: Tx,
@@ -171,18 +171,13 @@ async function performanceRatios(
   const asked = siteIds.filter((id) => (ratiosKept.get(id)?.untilMs ?? 0) <= at.getTime());
   if (asked.length > 0) {
     const { rows } = await tx.raw<{ rows: { siteId: number; ratio: number | null }[] }>(
-      `with rated as (
-         select sl.site_id, sum(m.vmp_ref * m.imp_ref)::float8 as watts
-         from slot sl join module_type m on m.id = sl.module_type_id
-         where sl.site_id = any (:asked) group by sl.site_id),
-       measured as (
-         select site_id, sum(ac_power)::float8 / 4 as wh, sum(poa_insolation)::float8 as insolation
-         from site_quarter
-         where site_id = any (:asked) and at >= :from and at < :at and poa_insolation is not null
-         group by site_id)
-       select r.site_id as "siteId",
-              case when insolation >= 5000 and watts > 0 then wh / watts / (insolation / 1000) end as ratio
-       from rated r left join measured using (site_id)`,
+      `select site_id as "siteId",
+              case when sum(insolation) >= 5000
+                   then sum(energy_ac_lit)::float8 / nullif(sum(nameplate::float8 * insolation) / 1000, 0) end as ratio
+       from site_day
+       where site_id = any (:asked) and day >= (:from::timestamptz at time zone 'UTC')::date and day <= :at::timestamptz::date + 1
+         and insolation is not null
+       group by site_id`,
       { asked: [...asked], at, from: new Date(at.getTime() - 30 * 86_400_000) },
     );
     const untilMs = at.getTime() + RATIO_KEPT_MS;
