@@ -3,6 +3,7 @@ import { DEMO_SEED, demoFleet } from '../simulator/scenarios/demo';
 import { seedHistory } from './history/fleet-history';
 import { clearFleet } from './plant/clear';
 import { seedPlant } from './plant/seed-plant';
+import { seedAudit } from './records/audit';
 import { seedCases } from './records/cases';
 import { seedCommissioningRecords } from './records/commissioning';
 import { seedPrices } from './records/prices';
@@ -31,6 +32,7 @@ export async function seed(knex: Knex): Promise<void> {
     await seedCommissioningRecords(tx, plant, since);
     await seedPrices(tx);
     await seedCases(tx, plant, since);
+    await seedAudit(tx, plant, since);
     await seedHistory(tx, fleet, plant, (line) => console.log(line));
   });
   // All but the frames: those are only ever read by string and time, and statistics of their arrays cost seconds.
