@@ -1,24 +1,23 @@
 import { counted } from '../drawings/numbers';
 
 export const accountWords = {
-  youAreSignedIn: 'You are signed in on this device only',
-  youAreSignedInOn: (others: number) => `You are signed in on ${others + 1} devices`,
-  ofYouSignIn: (person: string, role: string, organisation: string, email: string) =>
+  onThisDeviceOnly: 'You are signed in on this device only',
+  onDevices: (others: number) => `You are signed in on ${others + 1} devices`,
+  whoYouAre: (person: string, role: string, organisation: string, email: string) =>
     `${person}, ${role} of ${organisation}. You sign in with ${email}.`,
   password: 'Password',
   address: 'Address',
 };
 
 export const credentialForms = {
-  yourPasswordIsChanged: 'Your password is changed; other devices were signed out.',
+  passwordChanged: 'Your password is changed; other devices were signed out.',
   currentPassword: 'Current password',
   newPassword: 'New password',
-  atLeastCharactersThree: (passwordMin: number) =>
-    `At least ${passwordMin} characters. Three or four words do well.`,
+  passwordHint: (passwordMin: number) => `At least ${passwordMin} characters. Three or four words do well.`,
   changeThePassword: 'Change the password',
-  yourAddressChangesWhen: (email: string) =>
+  addressChangesWhen: (email: string) =>
     `Your address changes when the link in it is used. Until then you sign in with ${email}.`,
-  letterIsOnIts: (sentTo: string) => `A letter is on its way to ${sentTo}`,
+  letterSent: (sentTo: string) => `A letter is on its way to ${sentTo}`,
   newAddress: 'New address',
   sendTheLetter: 'Send the letter',
 };
@@ -27,32 +26,32 @@ export const secondFactorWords = {
   secondFactor: 'Second factor',
   inForceSince: 'In force since ',
   recoveryCodesLeft: (recoveryCodesLeft: number) => `. ${counted(recoveryCodesLeft, 'recovery code')} left.`,
-  noneWithOneSign: 'None. With one, sign-in also asks for a code that an authenticator on your phone shows.',
+  none: 'None. With one, sign-in also asks for a code that an authenticator on your phone shows.',
   endIt: 'End it',
   setOneUp: 'Set one up',
-  keepTheseRecoveryCodes:
+  keepRecoveryCodes:
     'Keep these recovery codes where you will find them without your phone. Each works once; they are not shown again.',
-  theSecondFactorIs: 'The second factor is in force',
+  nowInForce: 'The second factor is in force',
   recoveryCodes: 'Recovery codes',
   iHaveKeptThem: 'I have kept them',
   yourPassword: 'Your password',
   endTheSecondFactor: 'End the second factor',
   goOn: 'Go on',
   leaveIt: 'Leave it',
-  readThisPictureWith: 'Read this picture with your authenticator, then type the code that it shows.',
-  codeForYourAuthenticator: 'Code for your authenticator; the secret below says the same',
-  orTypeInThe: 'Or type in the secret ',
+  readPicture: 'Read this picture with your authenticator, then type the code that it shows.',
+  pictureLabel: 'Code for your authenticator; the secret below says the same',
+  orTypeSecret: 'Or type in the secret ',
   code: 'Code',
   putItInForce: 'Put it in force',
 };
 
 export const sessionsWords = {
   whereYouAreSigned: 'Where you are signed in',
-  addressFromAddressUsed: (address: null | string) => `${address ? `from ${address}, ` : ''}used `,
+  usedFrom: (address: null | string) => `${address ? `from ${address}, ` : ''}used `,
   thisDevice: 'this device',
   signItOut: 'Sign it out',
   signOutEverywhereElse: 'Sign out everywhere else',
-  showSessions: (sessions: number, fEW: number) => `Show ${counted(sessions - fEW, 'more device')}`,
+  showMoreDevices: (sessions: number, fEW: number) => `Show ${counted(sessions - fEW, 'more device')}`,
 };
 
 export const tokenForm = {
@@ -60,8 +59,8 @@ export const tokenForm = {
   whatWillUseIt: 'What will use it, so that you know it again.',
   whatItMayDo: 'What it may do',
   sites: 'Sites',
-  everySiteThatYou: 'every site that you see',
-  countedSitesSite: (sites: number) => counted(sites, 'site'),
+  everySite: 'every site that you see',
+  sitesCount: (sites: number) => counted(sites, 'site'),
   onlyTheseSites: 'Only these sites',
   holdsFor: 'Holds for',
   days: (days: number) => `${days} days`,
@@ -70,11 +69,11 @@ export const tokenForm = {
 };
 
 export const tokensWords = {
-  makeAToken: 'Make a token',
+  makeToken: 'Make a token',
   yourNewToken: 'Your new token',
   endThisToken: 'End this token?',
   tokens: 'Tokens',
-  whatAProgramCan: 'What a program can ask for',
+  programsInterface: 'What a program can ask for',
   noneATokenLets:
     'None. A token lets a program of yours read from Wakeline, and never do more than you may yourself.',
   endIt: 'End it',
@@ -86,16 +85,16 @@ export const tokensWords = {
   used: 'Used ',
   fromLastAddress: (lastAddress: string) => ` from ${lastAddress}`,
   notUsedYet: 'Not used yet',
-  countedSitesSite: (sites: number) => counted(sites, 'site'),
+  sitesCount: (sites: number) => counted(sites, 'site'),
   keepItWhereYour:
     'Keep it where your program finds it and nobody else does. It is not shown again: Wakeline has only its hash.',
   theToken: 'The token',
-  itIsOnYour: 'It is on your clipboard.',
-  yourBrowserDidNot: 'Your browser did not allow it. Select the token and copy it.',
+  copied: 'It is on your clipboard.',
+  copyRefused: 'Your browser did not allow it. Select the token and copy it.',
   copyIt: 'Copy it',
-  iHaveKeptIt: 'I have kept it',
+  keptIt: 'I have kept it',
   theProgramThatUses: 'The program that uses ',
-  isRefusedFromThat: ' is refused from that moment. It can’t be undone; a new one can be made.',
-  endTheToken2: 'End the token',
+  endMeans: ' is refused from that moment. It can’t be undone; a new one can be made.',
+  endTokenTitle: 'End the token',
   leaveIt: 'Leave it',
 };

@@ -6,11 +6,11 @@ export const letterSheet = {
   eachWeek: 'Each week',
   eachMonth: 'Each month',
   noLetterIsSent: 'No letter is sent to you about this roof.',
-  aLetterComesOn: 'A letter comes on Mondays, about the week before.',
-  aLetterComesOnThe: 'A letter comes on the first of the month, about the month before.',
+  weeklyComes: 'A letter comes on Mondays, about the week before.',
+  monthlyComes: 'A letter comes on the first of the month, about the month before.',
   notChanged: (message: string) => `Not changed: ${message}`,
   notChangedTryAgain: 'Not changed. Try again.',
-  aLetterAboutThis: 'A letter about this roof',
+  title: 'A letter about this roof',
   howOften: 'How often',
 };
 
@@ -19,23 +19,23 @@ export const reportSheet = {
   beingLookedAtWaiting: 'being looked at; waiting for a part or a visit',
   done: 'done',
   lookedAtNoFault: 'looked at: no fault was found',
-  itCouldNotBe: 'It could not be sent. What you wrote is still here; try again.',
+  notSent: 'It could not be sent. What you wrote is still here; try again.',
   somethingLooksWrong: 'Something looks wrong?',
   sayWhatYouSee: (organisation: string) =>
     `Say what you see. ${organisation} gets it at once, with what your roof is doing at this minute. In an emergency call the emergency services, and keep away from modules and cables.`,
   whatLooksWrong: 'What looks wrong',
   sending: 'Sending',
   sendTo: (organisation: string) => `Send to ${organisation}`,
-  howItStandsIs: 'How it stands is shown below.',
-  sentHasIt: (organisation: string) => `Sent: ${organisation} has it`,
+  shownBelow: 'How it stands is shown below.',
+  sent: (organisation: string) => `Sent: ${organisation} has it`,
   whatYouReported: 'What you reported',
-  atNumberNAt: (at: string, timeZone: string, n: number, state: string, closedAt: null | string) =>
+  reportLine: (at: string, timeZone: string, n: number, state: string, closedAt: null | string) =>
     `${longDate(at, timeZone)}, number ${n}: ${state}${closedAt ? ` since ${longDate(closedAt, timeZone)}` : ''}`,
 };
 
 export const roofList = {
-  askToGiveYou: (organisation: string) => `Ask ${organisation} to give you access to yours.`,
-  noRoofHasBeen: 'No roof has been given to you yet',
+  askForAccess: (organisation: string) => `Ask ${organisation} to give you access to yours.`,
+  noRoofYet: 'No roof has been given to you yet',
 };
 
 export const roofPage = {
@@ -43,27 +43,27 @@ export const roofPage = {
   monthPdf: (month: string) => `${month}, PDF`,
   whatYourRoofMade: 'What your roof made, month by month:',
   earlierMonths: 'Earlier months',
-  howYourSystemIs: (newest: string) =>
+  handoverSays: (newest: string) =>
     `How your system is built, what was measured, and how to look after it, as of ${newest}. Keep a copy where the people who work on the roof will find it.`,
   handoverPapersPdf: 'Handover papers, PDF',
   earlierVersions: 'Earlier versions',
   versionOfPaper: (version: number, paper: string) => `Version ${version}, ${paper}`,
-  asOfAtReaderZone: (at: string, timeZone: string, readerZone: null | string, at2: boolean) =>
+  asOf: (at: string, timeZone: string, readerZone: null | string, at2: boolean) =>
     `As of ${clock(at, timeZone)}${readerZone && at2 ? ` ${zoneName(at, timeZone)}, the time at the roof` : ''}.`,
-  itCouldNotBe: ' It could not be read again since; the next try follows by itself.',
+  notReadSince: ' It could not be read again since; the next try follows by itself.',
   rapidShutdown: 'Rapid shutdown',
   whoLooksAfterIt: 'Who looks after it',
-  inAnEmergencyCall: 'In an emergency call the emergency services first.',
+  emergency: 'In an emergency call the emergency services first.',
 };
 
 export const todaySheet = {
-  nothingIsKnownOf: 'Nothing is known of today yet; the dotted line is a clear day of this date.',
+  nothingKnown: 'Nothing is known of today yet; the dotted line is a clear day of this date.',
   powerMadeTodayN: (n: number, clearEnergyUntilNow: number) =>
     `Power made today, ${energy(n)} so far, beside a clear day of this date${clearEnergyUntilNow > 0 ? `: ${percent(n / clearEnergyUntilNow)} of it by now` : ''}.`,
   today: 'Today',
   solidMade: (clearFrom: string) => `solid: made · ${clearFrom}`,
   nothingIsKnownOfToday: 'Nothing is known of today yet.',
-  theSameAsA: 'The same as a table',
+  sameAsTable: 'The same as a table',
   todayAsATable: 'Today as a table',
   meanPowerOfEach: 'Mean power of each quarter of an hour',
   from: 'From',
@@ -73,7 +73,7 @@ export const todaySheet = {
 
 export const customerCards = {
   minutesMin: (minutes: number) => `${minutes} min`,
-  noDayOfThis: 'no day of this month is complete yet',
+  noWholeDayYet: 'no day of this month is complete yet',
   withoutComparison: (days: number) => `${counted(days, 'day')}, without a comparison`,
   aboutWhatItsWeather: 'about what its weather allowed',
   whatItsWeatherAllowed: (off: number, off2: number) =>
@@ -83,10 +83,10 @@ export const customerCards = {
   countedFrom: (from: string, countedFrom: string) => `${from}; counted from ${countedFrom}`,
   thisYear: 'This year',
   since: (since: string) => `since ${since}`,
-  sinceTheFirstOf: 'since the first of January',
+  sinceJanuary: 'since the first of January',
   thisMonth: (month: number, currency: string) => `${money(month, currency)} this month`,
-  thisYear2: (year: number, currency: string) => `${money(year, currency)} this year`,
-  daysWithoutAPrice: 'days without a price left out',
+  worthThisYear: (year: number, currency: string) => `${money(year, currency)} this year`,
+  daysWithoutPrice: 'days without a price left out',
   worthSinceSwitchOn: 'Worth since switch-on',
   workingTimeSinceThen: 'Working time since then',
   noFullDayYet: 'no full day yet',
@@ -95,10 +95,10 @@ export const customerCards = {
   noHourOfDaylight: 'no hour of daylight lost',
   lostOfItGrid: (lost: string, grid: number, lost2: number, grid2: string) =>
     `${lost} lost${grid > 0 ? `, ${grid >= lost2 ? 'all' : grid2} of it grid outage` : ''}`,
-  below30VWithin: ' below 30 V within 30 seconds',
-  below30VWithin10: ' below 30 V within 10 seconds',
-  noShutdownTestIs: 'No shutdown test is on record for this roof.',
-  countedStringsGroupOf: (strings: number) => counted(strings, 'group of modules', 'groups of modules'),
+  withinThirtySeconds: ' below 30 V within 30 seconds',
+  withinTenSeconds: ' below 30 V within 10 seconds',
+  noShutdownTest: 'No shutdown test is on record for this roof.',
+  groupsOfModules: (strings: number) => counted(strings, 'group of modules', 'groups of modules'),
   lastTestedByMeasured: (
     on: string,
     madeBy: string,
@@ -107,7 +107,7 @@ export const customerCards = {
     ruleSet: undefined | string,
   ) =>
     `Last tested ${on} by ${madeBy}: ${strings === 1 ? '' : 'all '}${strings2} measured${ruleSet ?? ' as required'}, by meter.`,
-  lastTestedByNot: (on: string, madeBy: string) =>
+  lastTestNotPassed: (on: string, madeBy: string) =>
     `Last tested ${on} by ${madeBy}: not passed. Treat the roof as live, also with the switch operated.`,
   lastOperatedTheReadings: (on: string) =>
     `Last operated ${on}: the readings agree with a shutdown, but nobody measured it with a meter. That is no test.`,
@@ -120,8 +120,8 @@ export const customerCards = {
   evenShutDownModules: (where: string) =>
     `${where} Even shut down, modules and the cables at them stay live in light.`,
   looksAfterThisRoof: (organisation: string) => `${organisation} looks after this roof.`,
-  looksAfterThisRoofNo: (organisation: string) =>
+  carerWithoutPhone: (organisation: string) =>
     `${organisation} looks after this roof; no telephone number is recorded.`,
-  dottedAClearDay: 'dotted: a clear day of this date, as this roof does on its best days',
-  dottedAClearDayOf: 'dotted: a clear day of this date, reckoned from the data sheet',
+  dottedFromBestDays: 'dotted: a clear day of this date, as this roof does on its best days',
+  dottedFromDataSheet: 'dotted: a clear day of this date, reckoned from the data sheet',
 };

@@ -1,10 +1,10 @@
 export const developers = {
   operations: 'Operations',
-  findAnOperationA: 'Find an operation, a parameter or a field',
+  findLabel: 'Find an operation, a parameter or a field',
   ofOperations: (shown: number, operations: number) => `${shown} of ${operations} operations`,
-  searchForAThing: 'Search for a thing (unit, event), a parameter (cursor) or a field (voltage).',
-  nothingHereHasIn: (q: string) => `Nothing here has “${q}” in it`,
-  theExampleOfIs: (path: string) => `The example of ${path} is on your clipboard.`,
+  searchHint: 'Search for a thing (unit, event), a parameter (cursor) or a field (voltage).',
+  nothingFound: (q: string) => `Nothing here has “${q}” in it`,
+  exampleCopied: (path: string) => `The example of ${path} is on your clipboard.`,
 };
 
 export const operationSheet = {

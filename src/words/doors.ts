@@ -13,9 +13,9 @@ export const signInPage = {
 export const forgotPasswordPage = {
   passwordForgotten: 'Password forgotten',
   lookIntoYourMail: 'Look into your mail',
-  ifSomebodySignsIn: (email: string, resetHours: number) =>
+  letterMayCome: (email: string, resetHours: number) =>
     `If somebody signs in with ${email}, a letter is on its way there. Its link works once, for ${resetHours} hours.`,
-  aLetterWithA: 'A letter with a link that sets a new password goes to your address.',
+  letterHint: 'A letter with a link that sets a new password goes to your address.',
   eMail: 'E-mail',
   sendMeTheLetter: 'Send me the letter',
   toSignIn: 'To sign-in',
@@ -23,14 +23,14 @@ export const forgotPasswordPage = {
 
 export const newPasswordTokenPage = {
   aNewPassword: 'A new password',
-  yourNewPasswordIs: 'Your new password is set',
+  isSet: 'Your new password is set',
   everyDeviceWasSigned: 'Every device was signed out. Sign in with the new one.',
-  forEveryDeviceIs: (email: string) => `For ${email}. Every device is signed out when it is set.`,
+  forWhom: (email: string) => `For ${email}. Every device is signed out when it is set.`,
   newPassword: 'New password',
   setIt: 'Set it',
-  thisLinkCantBe: 'This link can’t be used',
+  linkUnusable: 'This link can’t be used',
   toSignIn: 'To sign-in',
-  haveANewLetter: 'Have a new letter sent',
+  newLetter: 'Have a new letter sent',
 };
 
 export const invitationTokenPage = {
@@ -41,37 +41,37 @@ export const invitationTokenPage = {
   yourName: 'Your name',
   password: 'Password',
   begin: 'Begin',
-  thisInvitationCantBe: 'This invitation can’t be used',
+  unusable: 'This invitation can’t be used',
   toSignIn: 'To sign-in',
 };
 
 export const confirmEmailTokenPage = {
   yourNewAddress: 'Your new address',
   yourAddressIsChanged: 'Your address is changed',
-  fromNowOnYou: (done: string) => `From now on you sign in with ${done}.`,
-  thisLinkCantBe: 'This link can’t be used',
-  useThisAddressFrom: 'Use this address from now on?',
-  youSignInWith: 'You sign in with the address that this letter was sent to.',
+  done: (done: string) => `From now on you sign in with ${done}.`,
+  linkUnusable: 'This link can’t be used',
+  question: 'Use this address from now on?',
+  questionHint: 'You sign in with the address that this letter was sent to.',
   useThisAddress: 'Use this address',
   toSignIn: 'To sign-in',
 };
 
 export const unsubscribeTokenPage = {
   letters: 'Letters',
-  thisLinkEndsNo: 'This link ends no letters',
+  linkUnusable: 'This link ends no letters',
   lettersComeAsBefore: 'Letters come as before',
   to: (what: string, email: string) => `${what}, to ${email}.`,
   noMoreOfThese: 'No more of these letters',
-  getsNoLettersOf: (what: string, email: string) =>
+  lettersEnded: (what: string, email: string) =>
     `${what}: ${email} gets no letters of this kind. What happens is still shown under Notices.`,
   sendThemAsBefore: 'Send them as before',
   endTheseLetters: 'End these letters?',
-  toWhatHappensIs: (what: string, email: string) =>
+  lettersOf: (what: string, email: string) =>
     `${what}, to ${email}. What happens is still shown under Notices when you sign in.`,
-  endTheseLetters2: 'End these letters',
+  endLettersButton: 'End these letters',
   lettersAboutAString:
     'Letters about a string that does not shut down can’t be ended, nor those about your account.',
-  chooseWhatYouAre: 'Choose what you are told of',
+  chooseNotices: 'Choose what you are told of',
 };
 
 export const sharedTokenPage = {
@@ -89,12 +89,12 @@ export const problem404Page = {
 
 export const problem500Page = {
   somethingFailedOnOur: 'Something failed on our side',
-  tryAgainIfIt: (requestId: string) => `Try again; if it stays, report it with the number ${requestId}.`,
+  tryAgain: (requestId: string) => `Try again; if it stays, report it with the number ${requestId}.`,
 };
 
 export const problemPage = {
   nothingIsHere: 'Nothing is here',
-  checkTheAddressOr: 'Check the address, or go back to the start.',
+  checkAddress: 'Check the address, or go back to the start.',
 };
 
 export const newPasswordField = {

@@ -1,10 +1,10 @@
 import { counted, number } from '../drawings/numbers';
 
 export const badCellsSheet = {
-  cellsThatWouldBe: 'Cells that would be left out',
-  theFirstOf: (faults: number, leftOut: number) => `the first ${number(faults)} of ${number(leftOut)}`,
-  countedLeftOutCell: (leftOut: number) => counted(leftOut, 'cell'),
-  mendThemInThe: 'Mend them in the file and choose it again, or import the rest without them.',
+  title: 'Cells that would be left out',
+  firstOf: (faults: number, leftOut: number) => `the first ${number(faults)} of ${number(leftOut)}`,
+  cellsLeftOut: (leftOut: number) => counted(leftOut, 'cell'),
+  mendOrImportRest: 'Mend them in the file and choose it again, or import the rest without them.',
   row: 'Row',
   column: 'Column',
   columnWords: (column: number) => `column ${column + 1}`,
@@ -18,9 +18,9 @@ export const badCellsSheet = {
 export const importHistory = {
   fleet: 'Fleet',
   earlierReadings: 'Earlier readings',
-  stopKeepNothingOf: 'Stop: keep nothing of it',
-  stringsShowItIn: 'Strings show it in their history, marked as imported. It can be taken back below.',
-  allOfItIs: 'All of it is kept',
+  stop: 'Stop: keep nothing of it',
+  whereItShows: 'Strings show it in their history, marked as imported. It can be taken back below.',
+  allKept: 'All of it is kept',
   lookAtTheSite: 'Look at the site',
   oneRowATime:
     'One row a time, with a column for each string; or one row a string and time. Voltage, current, power, energy or temperature of strings, single units, inputs or inverters, by the names of the as-built.',
@@ -38,9 +38,9 @@ export const importsSheet = {
   state: 'State',
   takenBack: 'taken back',
   takeBack: 'Take back',
-  takeBack2: (fileName: string) => `Take ${fileName} back`,
-  itCouldNotBe: 'It could not be taken back. Try again.',
-  itsGoFromEvery: (readings: number) =>
+  takeBackFile: (fileName: string) => `Take ${fileName} back`,
+  notTakenBackTryAgain: 'It could not be taken back. Try again.',
+  takingBackMeans: (readings: number) =>
     `Its ${counted(readings, 'reading')} go from every page and figure. What Wakeline measured stays, and so do other imports. The file can be imported again.`,
   why: 'Why',
   aFewWordsIf: 'A few words, if you like; they stay in the audit.',
@@ -54,15 +54,15 @@ export const layoutSheet = {
   columnsClockAndNumbers: 'Columns, clock and numbers',
   timesFollowTheClock: 'Times follow the clock of',
   theSite: (z: string) => `${z} (the site)`,
-  timesThatNameA: 'Times that name a zone themselves, such as 14:15+01:00, keep it.',
+  timesWithZone: 'Times that name a zone themselves, such as 14:15+01:00, keep it.',
   in342026: 'In 3/4/2026',
   asTheDatesShow: 'as the dates show',
   theDayComesFirst: 'the day comes first',
   theMonthComesFirst: 'the month comes first',
   beforeDecimalsStands: 'Before decimals stands',
   whatTheNumbersShow: 'what the numbers show',
-  aPoint4105: 'a point: 410.5',
-  aComma4105: 'a comma: 410,5',
+  decimalPoint: 'a point: 410.5',
+  decimalComma: 'a comma: 410,5',
   emptyInTheFirst: 'empty in the first rows',
   of: 'of',
   ofWhat: (header: string) => `${header}: of what`,
@@ -70,14 +70,14 @@ export const layoutSheet = {
 
 export const previewSheet = {
   whatWouldComeIn: 'What would come in',
-  countedRowsRow: (rows: number) => counted(rows, 'row'),
+  rowsCount: (rows: number) => counted(rows, 'row'),
   readingsByStringUnit: 'Readings by string, unit, input and inverter',
   of: 'Of',
   what: 'What',
   readings: 'Readings',
   fromAndToAt: 'From and to, at the site',
   showAll: (series: number) => `Show all ${number(series)}`,
-  ofAnInstantThat: (doubles: number) =>
+  doubles: (doubles: number) =>
     `${counted(doubles, 'reading')} of an instant that came before: the first one counts.`,
   whereTheyComeFrom: 'Where they come from',
   theLoggerBeforeOurs: 'the logger before ours, portal export, …',
@@ -100,7 +100,7 @@ export const historyImportUseHistoryImport = {
   pastedCells: 'pasted cells',
   checkingTheCells: 'Checking the cells',
   readingTheFile: 'Reading the file',
-  itHasMBAnd: (round: number, historyFileMaxBytes: number) =>
+  fileTooLarge: (round: number, historyFileMaxBytes: number) =>
     `It has ${round} MB, and ${historyFileMaxBytes / 1024 / 1024} MB is the most. Import it in parts, such as a year at a time.`,
   sendingTheFile: 'Sending the file',
   stopped: 'Stopped',
@@ -108,15 +108,15 @@ export const historyImportUseHistoryImport = {
 };
 
 export const historyImportWords = {
-  theServerReadsAnd: 'The server reads and keeps the rows',
+  serverReads: 'The server reads and keeps the rows',
   addingUpDays: 'Adding up days',
   keepingAllOfIt: 'Keeping all of it',
   fromTo: (from: string, to: string) => `${from} to ${to}`,
   readingsImported: (readings: number) =>
     `${counted(readings, 'reading')} ${readings === 1 ? 'is' : 'are'} imported`,
-  spanListedSaidN5: (span: string, listedSaid: string, n: number) =>
+  spanOf: (span: string, listedSaid: string, n: number) =>
     `${span}: ${listedSaid}${n > 5 ? ` and ${n - 5} more` : ''}. Pages show them where Wakeline measured nothing, and mark them.`,
-  earlierReadingsAreNot: 'Earlier readings are not imported yet',
+  noneYet: 'Earlier readings are not imported yet',
   reduceFromInForce: (reduce: number, inForce: number) =>
     `${counted(reduce, 'earlier reading')} from ${counted(inForce, 'file')}`,
   chooseAcsvOf:
@@ -124,12 +124,12 @@ export const historyImportWords = {
   readTheirColumnsNeed: (rows: number) => `${counted(rows, 'row')} read; their columns need a word`,
   checkingRows: (rows: number) => `Checking ${counted(rows, 'row')}`,
   everyCellIsLooked: 'Every cell is looked at; nothing is kept.',
-  noReadingCouldBe: 'No reading could be read from this file',
+  noneReadable: 'No reading could be read from this file',
   lookAtTheColumns:
     'Look at the columns, the time zone and the names below: each row says what is wrong with it.',
   wouldComeIn: (readings: number) => `${counted(readings, 'reading')} would come in`,
-  everyCellCouldBe: (period: string) => `${period}. Every cell could be read.`,
-  cantBeReadAnd: (period: string, leftOut: number) =>
+  everyCellRead: (period: string) => `${period}. Every cell could be read.`,
+  cellsUnreadable: (period: string, leftOut: number) =>
     `${period}. ${counted(leftOut, 'cell')} can't be read and would be left out: they are listed below.`,
   notUsed: 'not used',
   qInUnit: (q: string, unit: string) => `${q} in ${unit}`,

@@ -18,12 +18,12 @@ export const noticeLetters = {
     `Call the site now${numberSaid ? '' : ': its number is not entered in Wakeline'}. Nobody works on these strings until a licensed person has isolated them and proved them dead.`,
   callTheSite: 'Call the site',
   seeWhatHappened: 'See what happened',
-  acknowledgeAndCallThe: 'Acknowledge and call the site',
+  acknowledgeAndCall: 'Acknowledge and call the site',
   youGetThisLetter: (organisationName: string, fixed: undefined | string) =>
     `You get this letter because you look after sites for ${organisationName}. ${fixed ?? ''} It can’t be switched off.`,
   when: 'When',
   costsAbout: 'Costs about',
-  lossWhDayADay: (lossWhDay: number) => `${energy(lossWhDay)} a day`,
+  lossADay: (lossWhDay: number) => `${energy(lossWhDay)} a day`,
   onTheLadder: (ladder: string) => `On the ladder: ${ladder}`,
   seeYourSite: 'See your site',
   lookAtIt: 'Look at it',
@@ -39,12 +39,12 @@ export const accountLetters = {
   thisCantBeUsed: (what: string) =>
     `This ${what} can’t be used: it was used before, has run out, or was ended. Ask for a new one.`,
   helloPerson: (person: string) => `Hello ${person}`,
-  somebodyMostLikelyYou: 'Somebody, most likely you, asked for a new password for Wakeline.',
+  askedForPassword: 'Somebody, most likely you, asked for a new password for Wakeline.',
   theLinkBelowWorks: (resetHours: number) =>
     `The link below works once, for ${resetHours} hours. Every device is signed out when the new password is set.`,
   setANewPassword: 'Set a new password',
-  ifItWasNot: 'If it was not you, leave this letter: your password stays as it is.',
-  aNewPasswordFor: 'A new password for Wakeline',
+  notYou: 'If it was not you, leave this letter: your password stays as it is.',
+  newPasswordSubject: 'A new password for Wakeline',
 };
 
 export const noticeDigest = {
@@ -59,7 +59,7 @@ export const noticeDigest = {
   onTheLadder: (ladder: string) => `On the ladder: ${ladder}`,
   thingsToDo: (todo: number, lossWh: number, amount: string) =>
     `${countAtStart(todo)} ${todo === 1 ? 'thing' : 'things'} to do${lossWh > 0 ? `, worth about ${energy(lossWh)} a day${amount}` : ''}`,
-  nothingHasToBe: (over: number) => `Nothing has to be done: ${counted(over, 'thing is', 'things are')} over`,
+  nothingToDo: (over: number) => `Nothing has to be done: ${counted(over, 'thing is', 'things are')} over`,
   nothingHasToBeDone: (kept: number) =>
     `Nothing has to be done at the roofs: ${counted(kept, 'thing', 'things')} to know`,
   dearestFirstEachSays:
@@ -71,16 +71,16 @@ export const noticeDigest = {
 };
 
 export const roofLetters = {
-  noDataCameFrom: (siteName: string, period: string) => `No data came from ${siteName} in ${period}`,
+  noDataHeading: (siteName: string, period: string) => `No data came from ${siteName} in ${period}`,
   madeIn: (siteName: string, made: string, period: string) => `${siteName} made ${made} in ${period}`,
   helloPersonName: (personName: string) => `Hello ${personName},`,
-  nothingIsKnownOf: (organisation: string) =>
+  nothingKnown: (organisation: string) =>
     `Nothing is known of what your roof made. ${organisation} sees that too.`,
   yearBefore: (same: string, days: number, asked: number) =>
     `${same} a year before${days < asked ? ', days without data left out' : ''}.`,
-  ofTheReadingsAre: (completeness: number) =>
+  readingsMissing: (completeness: number) =>
     `${percent(1 - completeness)} of the readings are missing, so it may have been more.`,
-  itStoodStillFor: (lostMinutes: number, round: number, lostMinutesGrid: number) =>
+  stoodStill: (lostMinutes: number, round: number, lostMinutesGrid: number) =>
     `It stood still for ${lostMinutes < 90 ? counted(lostMinutes, 'minute') : `${round} hours`} of daylight${lostMinutesGrid >= lostMinutes ? ', because the grid was gone' : ''}.`,
   nothingStoodOut: 'Nothing stood out.',
   energy: 'Energy',
@@ -89,18 +89,18 @@ export const roofLetters = {
   worthAtYourPrice: 'Worth, at your price',
   readingsThatCame: 'Readings that came',
   lastShutdownTest: 'Last shutdown test',
-  notPassedTreatThe: 'not passed: treat the roof as live',
-  notMeasuredWithA: 'not measured with a meter',
+  testNotPassed: 'not passed: treat the roof as live',
+  testNotMeasured: 'not measured with a meter',
   noneOnRecord: 'none on record',
   modulesStayLiveIn: 'Modules stay live in light.',
   evenShutDownEvery:
     'Even shut down, every module and the cables right at it can give a dangerous shock. Leave the roof to qualified people.',
   lookAtYourRoof: 'Look at your roof',
-  organisationLooksAfterThis: (organisation: string, phone: null | string, every: string) =>
+  whyThisLetter: (organisation: string, phone: null | string, every: string) =>
     `${organisation} looks after this roof${phone ? `: ${phone}` : ''}. You asked for this letter each ${every}.`,
   chooseHowOftenIt: 'Choose how often it comes, or end it',
-  thatIsAboutAs: 'That is about as much as in the same days',
-  thatIsThanIn: (change: number, change2: number) =>
+  aboutAsMuch: 'That is about as much as in the same days',
+  comparedWith: (change: number, change2: number) =>
     `That is ${percent(change)} ${change2 < 0 ? 'less' : 'more'} than in the same days`,
 };
 
@@ -116,14 +116,14 @@ export const lettersSentLetter = {
 };
 
 export const lettersSentMakeHandover = {
-  open1OnePoint: (open: number) =>
+  pointsOpen: (open: number) =>
     `${open === 1 ? 'One point still blocks' : `${open} points still block`} the handover. Settle each, or have a manager accept it by name.`,
   helloCustomer: (customer: string) => `Hello ${customer}`,
-  theSolarSystemOf: (site: string) =>
+  handedOver: (site: string) =>
     `The solar system of ${site} has been handed over. Its papers are ready for you: how it is built, what was measured, and how to look after it.`,
-  thePapersOfHave: (site: string, version: number) =>
+  papersRenewed: (site: string, version: number) =>
     `The papers of ${site} have been renewed: this is version ${version}. The earlier versions stay available.`,
-  keepThemWhereThe: 'Keep them where the people who work on the roof will find them.',
+  keepPapers: 'Keep them where the people who work on the roof will find them.',
   seeYourSiteAnd: 'See your site and its papers',
   youGetThisLetter: (site: string) =>
     `You get this letter because you look after ${site}. It was sent by Wakeline for the people who built it.`,

@@ -3,7 +3,7 @@ import { counted } from '../drawings/numbers';
 export const lettersWords = {
   thisDemosLettersGo: 'This demo’s letters go to a post on this machine and no further.',
   aLetterIsMarked: 'A letter is marked as sent only after the mail server took it.',
-  noMailServerIs: (waiting: number) =>
+  noMailServer: (waiting: number) =>
     `${counted(waiting, 'letter waits', 'letters wait')}: no mail server is set`,
   setTheMailServer: 'Set SMTP_URL; what waits goes out by itself.',
   givenUp: (lost: number) => `${counted(lost, 'letter was', 'letters were')} given up`,
@@ -21,6 +21,6 @@ export const lettersWords = {
   newestFirstAtMost: 'newest first, at most 200',
   toWritten: (to: string) => `to ${to}, written `,
   nextTry: ' Next try ',
-  readItAsIt: 'Read it as it was received',
+  readAsReceived: 'Read it as it was received',
   letterSubject: (subject: string) => `Letter: ${subject}`,
 };

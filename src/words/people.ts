@@ -4,7 +4,7 @@ export const peopleWords = {
   name: 'Name',
   you: ' (you)',
   role: 'Role',
-  countedSitesSite: (sites: number) => counted(sites, 'site'),
+  sitesCount: (sites: number) => counted(sites, 'site'),
   secondFactor: 'Second factor',
   tokens: 'Tokens',
   used: 'used ',
@@ -16,61 +16,61 @@ export const peopleWords = {
   deactivate: 'Deactivate',
   letInAgain: 'Let in again',
   inviteSomebody: 'Invite somebody',
-  theInvitationOfHas: (name: string) => `The invitation of ${name} has ended.`,
+  invitationEnded: (name: string) => `The invitation of ${name} has ended.`,
   people: 'People',
-  filterByNameOr: 'Filter by name or address',
+  filterPlaceholder: 'Filter by name or address',
   all: 'All',
   whichPeople: 'Which people',
   canSignIn: 'Can sign in',
   everybody: 'Everybody',
   peopleOfTheOrganisation: 'People of the organisation',
   nobodyFitsTheseFilters: 'Nobody fits these filters',
-  aLetterWithA: 'A letter with a link goes to this address. The link works once, for a week.',
+  inviteHint: 'A letter with a link goes to this address. The link works once, for a week.',
   sendTheInvitation: 'Send the invitation',
-  anInvitationIsOn: (email: string) => `An invitation is on its way to ${email}.`,
+  invitationSent: (email: string) => `An invitation is on its way to ${email}.`,
   changePerson: (person: string) => `Change ${person}`,
   save: 'Save',
   wasChanged: (name: string, role: string, role2: string) =>
     `${name} was changed.${role === role2 ? '' : ' The new role holds from the next sign-in.'}`,
-  theTokensOfHave: (person: string) => `The tokens of ${person} have ended.`,
+  tokensEnded: (person: string) => `The tokens of ${person} have ended.`,
   deactivatePerson: (person: string) => `Deactivate ${person}?`,
   isSignedOutEverywhere: (person: string) =>
     `${person} is signed out everywhere at once and can’t sign in. What ${person} has recorded stays, under the same name.`,
   canNoLongerSign: (person: string) => `${person} can no longer sign in.`,
   leaveIt: 'Leave it',
   invited: 'Invited',
-  emailByInvitedBy: (email: string, invitedBy: string) => `${email} · by ${invitedBy}, `,
+  invitedAs: (email: string, invitedBy: string) => `${email} · by ${invitedBy}, `,
   ranOut: 'ran out',
   inviteAgain: 'Invite again',
   endIt: 'End it',
 };
 
 export const personForm = {
-  managerEverythingAndWho: 'Manager: everything, and who may do what',
-  commissioningTechnicianBuildsChecks: 'Commissioning technician: builds, checks and tests sites',
-  oMAnalystWatches: 'O&M analyst: watches sites, changes nothing on them',
-  customerSeesTheSites: 'Customer: sees the sites given, in plain words',
+  roleManager: 'Manager: everything, and who may do what',
+  roleTechnician: 'Commissioning technician: builds, checks and tests sites',
+  roleAnalyst: 'O&M analyst: watches sites, changes nothing on them',
+  roleCustomer: 'Customer: sees the sites given, in plain words',
   name: 'Name',
   signsInWith: (email: string) => `Signs in with ${email}`,
   eMail: 'E-mail',
   role: 'Role',
-  nobodyChangesTheirOwn: 'Nobody changes their own role.',
+  ownRoleFixed: 'Nobody changes their own role.',
   sites: 'Sites',
 };
 
 export const personTokens = {
-  inForceByWhich: (tokens: number, person: string) =>
+  tokensInForce: (tokens: number, person: string) =>
     `${counted(tokens, 'token')} in force, by which programs act for ${person}. Ended ones let nobody in from that moment.`,
   endTheToken: 'End the token',
   endAllTokens: (tokens: number) => `End all ${tokens} tokens`,
 };
 
 export const peopleList = {
-  countedOpenInvitationWaits: (open: number) => counted(open, 'invitation waits', 'invitations wait'),
-  active1OnePerson: (active: number) =>
+  invitationsWaiting: (open: number) => counted(open, 'invitation waits', 'invitations wait'),
+  whoCanSignIn: (active: number) =>
     `${active === 1 ? 'One person' : `${countAtStart(active)} people`} can sign in`,
-  isTheOnlyManager: (managers: undefined | string, waiting: string) =>
+  onlyManager: (managers: undefined | string, waiting: string) =>
     `${managers ?? ''} is the only manager: invite a second one, so that nobody is locked out.${waiting}`,
-  ofThemAreManagers: (managers: number, waiting: string) =>
+  managersAmongThem: (managers: number, waiting: string) =>
     `${number(managers)} of them are managers.${waiting}`,
 };

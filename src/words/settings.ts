@@ -20,14 +20,14 @@ export const organisationSheet = {
   timeZone: 'Time zone',
   forTimesThatBelong: 'For times that belong to no site. Each site keeps its own.',
   money: 'Money',
-  noneNoMoneyIs: 'none: no money is shown',
-  pricesAKWhAre: 'Prices a kWh are set on each site’s figures.',
+  noMoney: 'none: no money is shown',
+  moneyHint: 'Prices a kWh are set on each site’s figures.',
   temperatures: 'Temperatures',
   inC: 'in °C',
   inF: 'in °F',
   whatIsReadData: 'What is read. Data sheets and files keep °C.',
   rawReadingsAreShown: 'Raw readings are shown for',
-  emptyAsLongAs: 'Empty: as long as the installation keeps them, 90 days. Sums of quarters and days stay.',
+  retentionHint: 'Empty: as long as the installation keeps them, 90 days. Sums of quarters and days stay.',
   saving: 'Saving',
   save: 'Save',
 };
@@ -35,7 +35,7 @@ export const organisationSheet = {
 export const saved = {
   itHoldsFromNow: 'It holds from now on.',
   kept: 'Kept',
-  notSavedSeeThe: 'Not saved: see the fields',
+  notSaved: 'Not saved: see the fields',
 };
 
 export const settingsBoard = {
@@ -62,5 +62,5 @@ export const thresholdsSheet = {
 
 export const settingsUseSaving = {
   notSaved: 'Not saved',
-  itCouldNotBe: 'It could not be sent. What you typed is still here; try again.',
+  notSent: 'It could not be sent. What you typed is still here; try again.',
 };

@@ -1,11 +1,11 @@
 import { clock, zoneName } from '../drawings/times';
 
 export const sharedRoof = {
-  thisPageIsNo: 'This page is no longer shared',
+  noLongerShared: 'This page is no longer shared',
   theLinkWasEnded: 'The link was ended or has run out. Ask whoever gave it to you.',
   asOfAtReaderZone: (at: string, timeZone: string, readerZone: null | string, at2: boolean) =>
     `As of ${clock(at, timeZone)}${readerZone && at2 ? ` ${zoneName(at, timeZone)}, the time at the roof` : ''}.`,
-  itCouldNotBe: ' It could not be read again since; the next try follows by itself.',
+  notReadSince: ' It could not be read again since; the next try follows by itself.',
 };
 
 export const sharedScreen = {

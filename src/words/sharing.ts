@@ -18,10 +18,10 @@ export const sharedPages = {
   whoeverHasTheLink: (siteName: string) =>
     `Whoever has the link sees the sentences, today’s curve and the energy of ${siteName} without signing in; no address, no telephone, no names, no tests and no papers.`,
   shareThisPage: 'Share this page',
-  theLinksCouldNot: 'The links could not be read anew',
+  notReadAnew: 'The links could not be read anew',
   nobodySeesItWithout: 'Nobody sees it without signing in at present.',
   endedAndRunOut: (over: number) => `Ended and run out (${over})`,
-  theLinkShownThis: 'The link, shown this once',
+  linkShownOnce: 'The link, shown this once',
   endEnding: (ending: string) => `End “${ending}”?`,
   screensAndPeopleThat:
     'Screens and people that use the link see nothing from now on. It can’t be taken up again.',
@@ -29,13 +29,13 @@ export const sharedPages = {
 };
 
 export const shareForm = {
-  anOrdinaryPageFor: 'An ordinary page, for people with a phone or a computer',
+  ordinaryPage: 'An ordinary page, for people with a phone or a computer',
   aLobbyScreenLarge: 'A lobby screen: large, nothing to touch, dark at night',
   linkOf: (link: string) => `Link of “${link}”`,
   keepItNowOnly:
     'Keep it now: only a fingerprint of it is stored. Whoever has it sees the page until it ends.',
   copied: 'Copied.',
-  itCouldNotBe: 'It could not be copied: select it above and copy it by hand.',
+  copyByHand: 'It could not be copied: select it above and copy it by hand.',
   copyTheLink: 'Copy the link',
   openIt: 'Open it',
   done: 'Done',
@@ -43,8 +43,8 @@ export const shareForm = {
   whereOrForWhom: 'Where or for whom it is, for instance: Lobby.',
   form: 'Form',
   endsOn: 'Ends on',
-  theLastDayOn: 'The last day on which it works, at the site. Empty: until somebody ends it.',
-  mayStandInA: 'May stand in a page of',
+  lastDayHint: 'The last day on which it works, at the site. Empty: until somebody ends it.',
+  framedBy: 'May stand in a page of',
   forALobbyScreen:
     'For a lobby screen that shows several pages: the address of its page, as https://screens.example. Empty: no page may show it in a frame.',
   makeTheLink: 'Make the link',

@@ -15,18 +15,18 @@ export function TokenShown({ token, onDone }: { token: string; onDone: () => voi
   return (
     <>
       <p className="mb-3">
-        <strong className="font-semibold">{tokenShown.itIsShownThis}</strong>
+        <strong className="font-semibold">{tokenShown.shownOnce}</strong>
         {tokenShown.putItIntoThe}
       </p>
       <p className="mb-1 text-sm text-ink-2">{tokenShown.token}</p>
       <code className={`${box} select-all`}>{token}</code>
-      <p className="mb-1 mt-4 text-sm text-ink-2">{tokenShown.theLoggerReportsTo}</p>
+      <p className="mb-1 mt-4 text-sm text-ink-2">{tokenShown.reportsTo}</p>
       <code className={box}>
         {here
           ? `${here.protocol === 'https:' ? 'wss' : 'ws'}://${here.host}${paths.ingest()}`
           : paths.ingest()}
       </code>
-      <p className="mb-1 mt-4 text-sm text-ink-2">{tokenShown.orWhereItHas}</p>
+      <p className="mb-1 mt-4 text-sm text-ink-2">{tokenShown.orByHttps}</p>
       <code className={box}>{`${here?.origin ?? ''}${paths.api.v1Ingest()}`}</code>
       <div className="mt-4 flex flex-wrap gap-2">
         {typeof navigator !== 'undefined' && 'clipboard' in navigator && (

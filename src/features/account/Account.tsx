@@ -30,8 +30,8 @@ export function Account({ initial, tokens }: { initial: AccountPage; tokens: Tok
   return (
     <>
       <Heading
-        finding={others === 0 ? accountWords.youAreSignedIn : accountWords.youAreSignedInOn(others)}
-        sentence={accountWords.ofYouSignIn(
+        finding={others === 0 ? accountWords.onThisDeviceOnly : accountWords.onDevices(others)}
+        sentence={accountWords.whoYouAre(
           page.person.name,
           page.person.role,
           page.person.organisation,

@@ -47,7 +47,7 @@ export function PasswordForm({ email, onChanged }: { email: string; onChanged: (
       }}
     >
       <input type="hidden" autoComplete="username" value={email} />
-      {done && !fault && <Notice kind="done" title={credentialForms.yourPasswordIsChanged} />}
+      {done && !fault && <Notice kind="done" title={credentialForms.passwordChanged} />}
       <Whole fault={fault} fields={['current', 'password']} />
       <Field
         label={credentialForms.currentPassword}
@@ -62,7 +62,7 @@ export function PasswordForm({ email, onChanged }: { email: string; onChanged: (
         type="password"
         autoComplete="new-password"
         value={password}
-        hint={credentialForms.atLeastCharactersThree(PASSWORD_MIN)}
+        hint={credentialForms.passwordHint(PASSWORD_MIN)}
         error={fault?.fault('password')}
         onChange={(event) => setPassword(event.target.value)}
       />
@@ -100,8 +100,8 @@ export function EmailForm({ email }: { email: string }) {
       }}
     >
       {sentTo && !fault && (
-        <Notice kind="done" title={credentialForms.letterIsOnIts(sentTo)}>
-          {credentialForms.yourAddressChangesWhen(email)}
+        <Notice kind="done" title={credentialForms.letterSent(sentTo)}>
+          {credentialForms.addressChangesWhen(email)}
         </Notice>
       )}
       <Whole fault={fault} fields={['current', 'email']} />

@@ -36,7 +36,7 @@ export function SecondFactor({ page, onChanged }: { page: AccountPage; onChanged
                 {secondFactorWords.recoveryCodesLeft(recoveryCodesLeft)}
               </>
             ) : (
-              secondFactorWords.noneWithOneSign
+              secondFactorWords.none
             )}
           </p>
           <Button className="mt-3" onClick={() => setStage({ kind: since ? 'end' : 'begin' })}>
@@ -61,8 +61,8 @@ export function SecondFactor({ page, onChanged }: { page: AccountPage; onChanged
       )}
       {stage.kind === 'codes' && (
         <>
-          <Notice kind="done" title={secondFactorWords.theSecondFactorIs}>
-            {secondFactorWords.keepTheseRecoveryCodes}
+          <Notice kind="done" title={secondFactorWords.nowInForce}>
+            {secondFactorWords.keepRecoveryCodes}
           </Notice>
           <ul
             className="mt-3 grid grid-cols-2 gap-x-6 gap-y-1 font-mono text-[15px]"
@@ -153,14 +153,14 @@ function Confirm({
         void go();
       }}
     >
-      <p>{secondFactorWords.readThisPictureWith}</p>
+      <p>{secondFactorWords.readPicture}</p>
       <img
-        alt={secondFactorWords.codeForYourAuthenticator}
+        alt={secondFactorWords.pictureLabel}
         src={`data:image/svg+xml,${encodeURIComponent(begun.picture)}`}
         className="my-3 h-[180px] w-[180px] bg-[#fff]"
       />
       <p className="mb-3 break-all text-sm text-ink-2">
-        {secondFactorWords.orTypeInThe}
+        {secondFactorWords.orTypeSecret}
         <span className="font-mono">{begun.secret}</span>
       </p>
       <Field

@@ -33,7 +33,7 @@ export function Sessions({ page, onChanged }: { page: AccountPage; onChanged: ()
             <div className="min-w-0">
               <p className="font-medium">{s.device}</p>
               <p className="text-sm text-ink-2">
-                {sessionsWords.addressFromAddressUsed(s.address)}
+                {sessionsWords.usedFrom(s.address)}
                 <RelativeTime at={s.usedAt} now={page.at} timeZone={page.person.timeZone} />
               </p>
             </div>
@@ -55,7 +55,7 @@ export function Sessions({ page, onChanged }: { page: AccountPage; onChanged: ()
         )}
         {!all && page.sessions.length > FEW && (
           <Button onClick={() => setAll(true)}>
-            {sessionsWords.showSessions(page.sessions.length, FEW)}
+            {sessionsWords.showMoreDevices(page.sessions.length, FEW)}
           </Button>
         )}
       </div>

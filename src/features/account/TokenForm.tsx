@@ -71,9 +71,7 @@ export function TokenForm({
         <summary className="flex min-h-[44px] cursor-pointer items-center justify-between gap-3">
           <span className="font-medium">{tokenForm.sites}</span>
           <span className="text-sm text-ink-2">
-            {typed.sites.length === 0
-              ? tokenForm.everySiteThatYou
-              : tokenForm.countedSitesSite(typed.sites.length)}
+            {typed.sites.length === 0 ? tokenForm.everySite : tokenForm.sitesCount(typed.sites.length)}
           </span>
         </summary>
         <Checks

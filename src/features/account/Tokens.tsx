@@ -20,9 +20,7 @@ const KEY = ['account', 'tokens'];
 type Open = { kind: 'make' } | { kind: 'made'; made: MadeToken } | { kind: 'end'; token: TokenItem };
 
 const titleOf = (open: Open): string =>
-  ({ make: tokensWords.makeAToken, made: tokensWords.yourNewToken, end: tokensWords.endThisToken })[
-    open.kind
-  ];
+  ({ make: tokensWords.makeToken, made: tokensWords.yourNewToken, end: tokensWords.endThisToken })[open.kind];
 
 /** Tokens by which programs of one's own read and write. */
 export function Tokens({ initial, timeZone }: { initial: TokensPage; timeZone: string }) {
@@ -47,7 +45,7 @@ export function Tokens({ initial, timeZone }: { initial: TokensPage; timeZone: s
       title={tokensWords.tokens}
       aside={
         <a href={paths.developers()} className="link">
-          {tokensWords.whatAProgramCan}
+          {tokensWords.programsInterface}
         </a>
       }
     >
@@ -81,7 +79,7 @@ export function Tokens({ initial, timeZone }: { initial: TokensPage; timeZone: s
           setOpen({ kind: 'make' });
         }}
       >
-        {tokensWords.makeAToken}
+        {tokensWords.makeToken}
       </Button>
       {/* one dialog whose content follows: one that closes would take the next one with it */}
       <Dialog open={open !== null} title={open ? titleOf(open) : ''} onClose={close}>
@@ -134,7 +132,7 @@ function TokenLine({ token, at, timeZone }: { token: TokenItem; at: string; time
 
 const FEW = 3;
 const sitesWords = (sites: readonly string[]): string =>
-  sites.length > FEW ? tokensWords.countedSitesSite(sites.length) : listed(sites);
+  sites.length > FEW ? tokensWords.sitesCount(sites.length) : listed(sites);
 
 /** The token, this once. */
 function Made({ made, onKept }: { made: MadeToken; onKept: () => void }) {
@@ -152,8 +150,8 @@ function Made({ made, onKept }: { made: MadeToken; onKept: () => void }) {
         {made.token}
       </p>
       <p role="status" className="mb-3 text-sm text-ink-2 empty:hidden">
-        {copied === true && tokensWords.itIsOnYour}
-        {copied === false && tokensWords.yourBrowserDidNot}
+        {copied === true && tokensWords.copied}
+        {copied === false && tokensWords.copyRefused}
       </p>
       <div className="flex flex-wrap gap-2">
         <Button
@@ -167,7 +165,7 @@ function Made({ made, onKept }: { made: MadeToken; onKept: () => void }) {
           {tokensWords.copyIt}
         </Button>
         <Button weight="primary" onClick={onKept}>
-          {tokensWords.iHaveKeptIt}
+          {tokensWords.keptIt}
         </Button>
       </div>
     </>
@@ -185,7 +183,7 @@ function EndForm({ token, onEnded, onLeft }: { token: TokenItem; onEnded: () => 
       <p>
         {tokensWords.theProgramThatUses}
         <strong className="font-semibold">{token.name}</strong>
-        {tokensWords.isRefusedFromThat}
+        {tokensWords.endMeans}
       </p>
       {fault && (
         <p role="alert" className="mt-3 font-medium text-rust-ink">
@@ -194,7 +192,7 @@ function EndForm({ token, onEnded, onLeft }: { token: TokenItem; onEnded: () => 
       )}
       <div className="mt-4 flex gap-2">
         <Button weight="primary" disabled={busy} onClick={() => void end()}>
-          {tokensWords.endTheToken2}
+          {tokensWords.endTokenTitle}
         </Button>
         <Button onClick={onLeft}>{tokensWords.leaveIt}</Button>
       </div>

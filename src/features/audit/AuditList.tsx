@@ -85,8 +85,8 @@ export function AuditList({ page, view, timeZone }: { page: AuditPage; view: Aud
       <form action={paths.audit()} className="no-print mb-4 flex flex-wrap items-center gap-x-3 gap-y-2">
         <SearchInput
           name="q"
-          label={auditList.findAPersonSite}
-          placeholder={auditList.personSiteSerialOr}
+          label={auditList.findLabel}
+          placeholder={auditList.findPlaceholder}
           defaultValue={view.q}
           className="sm:w-[280px]"
         />
@@ -108,9 +108,9 @@ export function AuditList({ page, view, timeZone }: { page: AuditPage; view: Aud
       {page.items.length === 0 ? (
         <Notice
           kind="empty"
-          title={view.q || view.area !== 'all' ? auditList.nothingFits : auditList.nothingIsOnRecord}
+          title={view.q || view.area !== 'all' ? auditList.nothingFits : auditList.nothingYet}
         >
-          {view.q || view.area !== 'all' ? auditList.useFewerWordsOr : ''}
+          {view.q || view.area !== 'all' ? auditList.nothingFitsHint : ''}
         </Notice>
       ) : (
         <Sheet id="entries" title={auditList.onRecord}>

@@ -14,8 +14,8 @@ const CHOICES = [
 ] as const;
 const SAYS: Record<Shown, string> = {
   none: letterSheet.noLetterIsSent,
-  week: letterSheet.aLetterComesOn,
-  month: letterSheet.aLetterComesOnThe,
+  week: letterSheet.weeklyComes,
+  month: letterSheet.monthlyComes,
 };
 
 /** What the roof made, by mail, as often as its owner wants. */
@@ -37,7 +37,7 @@ export function LetterSheet({ siteId, initial }: { siteId: string; initial: Lett
     }
   };
   return (
-    <Sheet id="letter" title={letterSheet.aLetterAboutThis} className="no-print">
+    <Sheet id="letter" title={letterSheet.title} className="no-print">
       <Segmented
         label={letterSheet.howOften}
         name="letter"

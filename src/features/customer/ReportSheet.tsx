@@ -41,7 +41,7 @@ export function ReportSheet({ siteId, timeZone, organisation, initial }: Props) 
       setRef(newRef());
       setSent(true);
     } catch (error) {
-      setFault(error instanceof ApiError ? (error.fault('what') ?? error.message) : reportSheet.itCouldNotBe);
+      setFault(error instanceof ApiError ? (error.fault('what') ?? error.message) : reportSheet.notSent);
     }
     setBusy(false);
   };
@@ -79,8 +79,8 @@ export function ReportSheet({ siteId, timeZone, organisation, initial }: Props) 
       </form>
       {sent && (
         <div className="mt-3">
-          <Notice kind="done" title={reportSheet.sentHasIt(organisation)}>
-            {reportSheet.howItStandsIs}
+          <Notice kind="done" title={reportSheet.sent(organisation)}>
+            {reportSheet.shownBelow}
           </Notice>
         </div>
       )}
@@ -93,7 +93,7 @@ export function ReportSheet({ siteId, timeZone, organisation, initial }: Props) 
             <li key={r.id} className="py-3">
               <p className="whitespace-pre-line break-words">{r.what}</p>
               <p className="mt-1 text-sm text-ink-2">
-                {reportSheet.atNumberNAt(r.at, timeZone, r.number, STANDS[r.state], r.closedAt)}
+                {reportSheet.reportLine(r.at, timeZone, r.number, STANDS[r.state], r.closedAt)}
               </p>
             </li>
           ))}

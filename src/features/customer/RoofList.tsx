@@ -11,8 +11,8 @@ const NO_DAY = { energy: null, clearEnergyUntilNow: 0 };
 export function RoofList({ sites, organisation }: { sites: CustomerSites; organisation: string }) {
   if (sites.length === 0)
     return (
-      <Notice kind="empty" title={roofList.noRoofHasBeen}>
-        {roofList.askToGiveYou(organisation)}
+      <Notice kind="empty" title={roofList.noRoofYet}>
+        {roofList.askForAccess(organisation)}
       </Notice>
     );
   return (

@@ -73,7 +73,7 @@ function HandoverPapers({ roof }: { roof: CustomerSite }) {
   const day = (paper: CustomerSite['papers'][number]) => longDate(paper.madeAt, roof.site.timeZone);
   return (
     <>
-      <p>{roofPage.howYourSystemIs(day(newest))}</p>
+      <p>{roofPage.handoverSays(day(newest))}</p>
       <p className="mt-2">
         <a
           href={file(newest)}
@@ -133,13 +133,13 @@ export function RoofPage({ initial }: { initial: CustomerSite }) {
           {words.sentences.join(' ')}
         </p>
         <p className="mt-2 text-sm text-ink-2">
-          {roofPage.asOfAtReaderZone(
+          {roofPage.asOf(
             roof.now.at,
             site.timeZone,
             readerZone,
             clocksDiffer(roof.now.at, site.timeZone, readerZone),
           )}
-          {error && dataUpdatedAt > 0 && roofPage.itCouldNotBe}
+          {error && dataUpdatedAt > 0 && roofPage.notReadSince}
         </p>
       </header>
       {words.caution && (
@@ -184,7 +184,7 @@ export function RoofPage({ initial }: { initial: CustomerSite }) {
                 </a>
               </p>
             )}
-            <p className="mt-2 text-ink-2">{roofPage.inAnEmergencyCall}</p>
+            <p className="mt-2 text-ink-2">{roofPage.emergency}</p>
           </Sheet>
         </div>
         <Papers roof={roof} />

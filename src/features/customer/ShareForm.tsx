@@ -13,7 +13,7 @@ interface Props {
   onClose: () => void;
 }
 const FORMS = [
-  { kiosk: false, words: shareForm.anOrdinaryPageFor },
+  { kiosk: false, words: shareForm.ordinaryPage },
   { kiosk: true, words: shareForm.aLobbyScreenLarge },
 ] as const;
 
@@ -43,7 +43,7 @@ export function ShareForm({ busy, fault, made, onSubmit, onClose }: Props) {
         />
         <p role="status" className="mt-2 min-h-[20px] text-sm text-ink-2">
           {copied === 'yes' && shareForm.copied}
-          {copied === 'no' && shareForm.itCouldNotBe}
+          {copied === 'no' && shareForm.copyByHand}
         </p>
         <div className="mt-2 flex flex-wrap gap-2">
           {typeof navigator !== 'undefined' && 'clipboard' in navigator && (
@@ -110,13 +110,13 @@ export function ShareForm({ busy, fault, made, onSubmit, onClose }: Props) {
         name="endsOn"
         type="date"
         value={typed.endsOn}
-        hint={shareForm.theLastDayOn}
+        hint={shareForm.lastDayHint}
         error={faultOf('endsOn')}
         onChange={(event) => setTyped({ ...typed, endsOn: event.target.value })}
       />
       {typed.kiosk && (
         <Field
-          label={shareForm.mayStandInA}
+          label={shareForm.framedBy}
           name="framedBy"
           inputMode="url"
           autoComplete="off"

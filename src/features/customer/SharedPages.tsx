@@ -112,7 +112,7 @@ export function SharedPages({
         </div>
         {error && (
           <div className="mt-3">
-            <Notice kind="failed" title={sharedPages.theLinksCouldNot}>
+            <Notice kind="failed" title={sharedPages.notReadAnew}>
               {error.message}
             </Notice>
           </div>
@@ -133,7 +133,7 @@ export function SharedPages({
       </Sheet>
       <Dialog
         open={making}
-        title={make.data ? sharedPages.theLinkShownThis : sharedPages.shareThisPage}
+        title={make.data ? sharedPages.linkShownOnce : sharedPages.shareThisPage}
         onClose={() => setMaking(false)}
       >
         <ShareForm

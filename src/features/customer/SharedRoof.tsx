@@ -11,7 +11,7 @@ import { sharedRoof } from '../../words/shared-page';
 
 /** What is said where a link no longer works. */
 export const LINK_OVER = {
-  title: sharedRoof.thisPageIsNo,
+  title: sharedRoof.noLongerShared,
   sentence: sharedRoof.theLinkWasEnded,
 };
 
@@ -38,7 +38,7 @@ export function SharedRoof({ token, initial }: { token: string; initial: SharedS
             readerZone,
             clocksDiffer(now.at, timeZone, readerZone),
           )}
-          {late && sharedRoof.itCouldNotBe}
+          {late && sharedRoof.notReadSince}
         </p>
       </header>
       {words.caution && (

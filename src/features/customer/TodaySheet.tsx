@@ -15,7 +15,7 @@ interface Props {
 /** What the curve shows, for those who do not see it. */
 export const dayLabel = (today: CustomerSite['today']): string =>
   today.energy === null
-    ? todaySheet.nothingIsKnownOf
+    ? todaySheet.nothingKnown
     : todaySheet.powerMadeTodayN(today.energy, today.clearEnergyUntilNow);
 
 /** The day so far as a curve beside a clear day of its date, and as a table. */
@@ -38,7 +38,7 @@ export function TodaySheet({ today, at, timeZone }: Props) {
       {today.energy === null && <p className="mt-2 text-ink-2">{todaySheet.nothingIsKnownOfToday}</p>}
       <details className="mt-2 text-sm text-ink-2">
         <summary className="inline-flex min-h-[36px] cursor-pointer items-center underline underline-offset-2">
-          {todaySheet.theSameAsA}
+          {todaySheet.sameAsTable}
         </summary>
         <div
           className="mt-2 max-h-[320px] overflow-auto"

@@ -22,7 +22,7 @@ const ABOUT = 0.025;
 export function monthCard(month: CustomerSite['month']): Card {
   const label = nameOfMonth(month.first);
   const figure = energy(month.energy);
-  if (month.days === 0) return { label, figure, note: customerCards.noDayOfThis };
+  if (month.days === 0) return { label, figure, note: customerCards.noWholeDayYet };
   if (!month.expected || month.expected <= 0)
     return { label, figure, note: customerCards.withoutComparison(month.days) };
   const off = month.measured / month.expected - 1;
@@ -53,7 +53,7 @@ export function yearCard(year: CustomerSite['year'], life: CustomerSite['life'])
   return {
     label: year.first.slice(0, 4),
     figure: energy(year.energy),
-    note: since > year.first ? customerCards.since(dayWords(since)) : customerCards.sinceTheFirstOf,
+    note: since > year.first ? customerCards.since(dayWords(since)) : customerCards.sinceJanuary,
   };
 }
 
@@ -62,8 +62,8 @@ export function worthCard(worth: NonNullable<CustomerSite['worth']>): Card {
   const { currency, month, year, life, partly } = worth;
   const parts = [
     month === null ? '' : customerCards.thisMonth(month, currency),
-    year === null ? '' : customerCards.thisYear2(year, currency),
-    partly ? customerCards.daysWithoutAPrice : '',
+    year === null ? '' : customerCards.worthThisYear(year, currency),
+    partly ? customerCards.daysWithoutPrice : '',
   ];
   return {
     label: customerCards.worthSinceSwitchOn,
@@ -87,8 +87,8 @@ export function workingTimeCard(life: CustomerSite['life']): Card {
 }
 
 const LIMITS: Partial<Record<CustomerSite['site']['ruleSet'], string>> = {
-  rapid_shutdown_30s: customerCards.below30VWithin,
-  rapid_shutdown_10s: customerCards.below30VWithin10,
+  rapid_shutdown_30s: customerCards.withinThirtySeconds,
+  rapid_shutdown_10s: customerCards.withinTenSeconds,
 };
 
 /** What the last shutdown test showed, in words that promise no more than it did. */
@@ -97,14 +97,14 @@ export function testWords(
   ruleSet: CustomerSite['site']['ruleSet'],
   timeZone: string,
 ): string {
-  if (!test) return customerCards.noShutdownTestIs;
+  if (!test) return customerCards.noShutdownTest;
   const on = longDate(test.at, timeZone);
-  const strings = customerCards.countedStringsGroupOf(test.strings);
+  const strings = customerCards.groupsOfModules(test.strings);
   switch (test.result) {
     case 'passed':
       return customerCards.lastTestedByMeasured(on, test.madeBy, test.strings, strings, LIMITS[ruleSet]);
     case 'failed':
-      return customerCards.lastTestedByNot(on, test.madeBy);
+      return customerCards.lastTestNotPassed(on, test.madeBy);
     case 'consistent':
       return customerCards.lastOperatedTheReadings(on);
     case 'not_witnessed':
@@ -124,8 +124,8 @@ export function switchWords(site: CustomerSite['site']): string {
 export const careWords = (care: CustomerSite['care']): string =>
   care.phone
     ? customerCards.looksAfterThisRoof(care.organisation)
-    : customerCards.looksAfterThisRoofNo(care.organisation);
+    : customerCards.carerWithoutPhone(care.organisation);
 
 /** What the dotted line is, so that nobody takes it for a promise. */
 export const clearDayWords = (from: CustomerSite['today']['clearFrom']): string =>
-  from === 'own_best' ? customerCards.dottedAClearDay : customerCards.dottedAClearDayOf;
+  from === 'own_best' ? customerCards.dottedFromBestDays : customerCards.dottedFromDataSheet;

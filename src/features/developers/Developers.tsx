@@ -32,7 +32,7 @@ export function Developers({ operations, q }: Props) {
         onSubmit={(event) => event.preventDefault()}
       >
         <SearchInput
-          label={developers.findAnOperationA}
+          label={developers.findLabel}
           value={view.q}
           onChange={(typed) => setView({ q: typed }, 'typed')}
           className="sm:w-[360px]"
@@ -45,8 +45,8 @@ export function Developers({ operations, q }: Props) {
         </span>
       </form>
       {shown.length === 0 && (
-        <Notice kind="empty" title={developers.nothingHereHasIn(view.q)}>
-          {developers.searchForAThing}
+        <Notice kind="empty" title={developers.nothingFound(view.q)}>
+          {developers.searchHint}
         </Notice>
       )}
       <div className="lg:grid lg:grid-cols-[220px_minmax(0,1fr)] lg:gap-8">
@@ -77,7 +77,7 @@ export function Developers({ operations, q }: Props) {
                   <OperationSheet
                     key={o.id}
                     operation={o}
-                    onCopied={() => setSaid(developers.theExampleOfIs(o.path))}
+                    onCopied={() => setSaid(developers.exampleCopied(o.path))}
                   />
                 ))}
               </div>

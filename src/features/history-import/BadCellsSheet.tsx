@@ -11,16 +11,16 @@ export function BadCellsSheet({ checked, headers }: { checked: CheckedHistory; h
     <Sheet
       id="bad-cells"
       flush
-      title={badCellsSheet.cellsThatWouldBe}
+      title={badCellsSheet.title}
       aside={
         leftOut > faults.length
-          ? badCellsSheet.theFirstOf(faults.length, leftOut)
-          : badCellsSheet.countedLeftOutCell(leftOut)
+          ? badCellsSheet.firstOf(faults.length, leftOut)
+          : badCellsSheet.cellsLeftOut(leftOut)
       }
     >
-      <p className="mb-3 text-[15px] text-ink-2">{badCellsSheet.mendThemInThe}</p>
+      <p className="mb-3 text-[15px] text-ink-2">{badCellsSheet.mendOrImportRest}</p>
       <Table
-        caption={badCellsSheet.cellsThatWouldBe}
+        caption={badCellsSheet.title}
         rows={faults}
         rowKey={(f) => `${f.row} ${f.column} ${f.message}`}
         columns={[

@@ -46,7 +46,7 @@ export function ImportHistory({ initial }: { initial: HistoryPage }) {
             words={busy.words}
             share={busy.share}
             onStop={busy.stop ?? undefined}
-            stopWords={importHistory.stopKeepNothingOf}
+            stopWords={importHistory.stop}
           />
         )}
         {error && (
@@ -64,10 +64,10 @@ export function ImportHistory({ initial }: { initial: HistoryPage }) {
         {made && (
           <Notice
             kind="done"
-            title={importHistory.allOfItIs}
+            title={importHistory.allKept}
             action={<ButtonLink href={paths.site(id)}>{importHistory.lookAtTheSite}</ButtonLink>}
           >
-            {importHistory.stringsShowItIn}
+            {importHistory.whereItShows}
           </Notice>
         )}
         {/* while a file is being sent nothing may change what is sent */}
@@ -98,7 +98,13 @@ export function ImportHistory({ initial }: { initial: HistoryPage }) {
             onPaste={work.takeText}
             onSplit={work.split}
           />
-          <ImportsSheet imports={work.imports} now={initial.at} timeZone={timeZone} onUndo={work.undo} />
+          <ImportsSheet
+            site={initial.site.id}
+            imports={work.imports}
+            now={initial.at}
+            timeZone={timeZone}
+            onUndo={work.undo}
+          />
         </div>
       </div>
     </>

@@ -1,5 +1,5 @@
 import { useState } from 'react';
-import { Button } from '../../components/ui/Button';
+import { Button, ButtonLink } from '../../components/ui/Button';
 import { Dialog } from '../../components/ui/Dialog';
 import { Field } from '../../components/ui/Field';
 import { Notice } from '../../components/ui/Notice';
@@ -10,10 +10,12 @@ import { SiteTime } from '../../components/ui/Time';
 import { listed, number } from '../../drawings/numbers';
 import { ApiError } from '../../lib/api';
 import type { HistoryImportView } from '../../schemas/api/history-import';
+import { paths } from '../../schemas/paths';
 import { span } from './words';
 import { importsSheet } from '../../words/history-import';
 
 interface Props {
+  site: string;
   imports: readonly HistoryImportView[];
   now: string;
   timeZone: string;
@@ -24,10 +26,24 @@ const ofWords = (of: readonly string[]): string =>
   of.length <= 3 ? listed(of) : importsSheet.andMore(of.slice(0, 2).join(', '), of.length);
 
 /** What was imported before, each with its way back. */
-export function ImportsSheet({ imports, now, timeZone, onUndo }: Props) {
+export function ImportsSheet({ site, imports, now, timeZone, onUndo }: Props) {
   const [undoing, setUndoing] = useState<HistoryImportView | null>(null);
   return (
-    <Sheet id="imports" flush title={importsSheet.importedFiles} aside={importsSheet.newestFirst}>
+    <Sheet
+      id="imports"
+      flush
+      title={importsSheet.importedFiles}
+      aside={
+        <span className="flex flex-wrap items-center gap-3">
+          {importsSheet.newestFirst}
+          {imports.length > 0 && (
+            <ButtonLink className="no-print" href={paths.api.historyImportsCsv(site)} download>
+              CSV
+            </ButtonLink>
+          )}
+        </span>
+      }
+    >
       <Table<HistoryImportView>
         caption={importsSheet.importedFiles}
         rows={imports}
@@ -89,7 +105,7 @@ export function ImportsSheet({ imports, now, timeZone, onUndo }: Props) {
                 <button
                   type="button"
                   className="target px-1 text-petrol hover:underline"
-                  aria-label={importsSheet.takeBack2(i.fileName)}
+                  aria-label={importsSheet.takeBackFile(i.fileName)}
                   onClick={() => setUndoing(i)}
                 >
                   {importsSheet.takeBack}
@@ -118,12 +134,12 @@ function UndoDialog({
       await onUndo(made.id, reason);
       onClose();
     } catch (error) {
-      setFailed(error instanceof ApiError ? error.message : importsSheet.itCouldNotBe);
+      setFailed(error instanceof ApiError ? error.message : importsSheet.notTakenBackTryAgain);
       setBusy(false);
     }
   };
   return (
-    <Dialog open title={importsSheet.takeBack2(made.fileName)} onClose={onClose}>
+    <Dialog open title={importsSheet.takeBackFile(made.fileName)} onClose={onClose}>
       <form
         className="grid gap-4"
         onSubmit={(event) => {
@@ -131,7 +147,7 @@ function UndoDialog({
           void undo();
         }}
       >
-        <p>{importsSheet.itsGoFromEvery(made.readings)}</p>
+        <p>{importsSheet.takingBackMeans(made.readings)}</p>
         <Field
           label={importsSheet.why}
           value={reason}

@@ -59,7 +59,7 @@ export function LayoutSheet({ facts, layout, known, siteZone, timeZones, wrong, 
           value={layout.timeZone}
           options={zones.map((z) => ({ value: z, label: z === siteZone ? layoutSheet.theSite(z) : z }))}
           onChange={(timeZone) => onLayout({ ...layout, timeZone })}
-          hint={layoutSheet.timesThatNameA}
+          hint={layoutSheet.timesWithZone}
         />
         <Choice
           label={layoutSheet.in342026}
@@ -76,8 +76,8 @@ export function LayoutSheet({ facts, layout, known, siteZone, timeZones, wrong, 
           value={layout.decimalMark ?? ''}
           options={[
             { value: '', label: layoutSheet.whatTheNumbersShow },
-            { value: 'point', label: layoutSheet.aPoint4105 },
-            { value: 'comma', label: layoutSheet.aComma4105 },
+            { value: 'point', label: layoutSheet.decimalPoint },
+            { value: 'comma', label: layoutSheet.decimalComma },
           ]}
           onChange={(v) => onLayout({ ...layout, decimalMark: v === 'point' || v === 'comma' ? v : null })}
         />

@@ -26,7 +26,7 @@ export function PreviewSheet({ checked, timeZone, busy, onImport }: Props) {
       id="preview"
       flush
       title={previewSheet.whatWouldComeIn}
-      aside={previewSheet.countedRowsRow(checked.rows)}
+      aside={previewSheet.rowsCount(checked.rows)}
     >
       <Table
         caption={previewSheet.readingsByStringUnit}
@@ -57,9 +57,7 @@ export function PreviewSheet({ checked, timeZone, busy, onImport }: Props) {
           {previewSheet.showAll(series.length)}
         </Button>
       )}
-      {checked.doubles > 0 && (
-        <p className="mt-3 text-[15px]">{previewSheet.ofAnInstantThat(checked.doubles)}</p>
-      )}
+      {checked.doubles > 0 && <p className="mt-3 text-[15px]">{previewSheet.doubles(checked.doubles)}</p>}
       <form
         className="mt-5 grid gap-4 border-t border-rule pt-4 md:grid-cols-[minmax(0,420px)_auto] md:items-end"
         onSubmit={(event) => {

@@ -108,7 +108,10 @@ export function useHistoryImport(initial: HistoryPage) {
     if (file.size > HISTORY_FILE_MAX_BYTES) {
       begin(file.name);
       setFileFault(
-        historyImportUseHistoryImport.itHasMBAnd(Math.round(file.size / 1024 / 1024), HISTORY_FILE_MAX_BYTES),
+        historyImportUseHistoryImport.fileTooLarge(
+          Math.round(file.size / 1024 / 1024),
+          HISTORY_FILE_MAX_BYTES,
+        ),
       );
       return;
     }

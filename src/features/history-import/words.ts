@@ -12,7 +12,7 @@ import type { CheckedHistory } from './desk';
 import { historyImportWords } from '../../words/history-import';
 
 export const STEP_WORDS: Record<HistoryStep, string> = {
-  reading: historyImportWords.theServerReadsAnd,
+  reading: historyImportWords.serverReads,
   adding_up: historyImportWords.addingUpDays,
   kept: historyImportWords.keepingAllOfIt,
 };
@@ -41,7 +41,7 @@ export function finding({ imports, rows, layoutFault, checked, made, timeZone }:
   if (made)
     return {
       heading: historyImportWords.readingsImported(made.readings),
-      sentence: historyImportWords.spanListedSaidN5(
+      sentence: historyImportWords.spanOf(
         span(Date.parse(made.from), Date.parse(made.to), timeZone),
         listed(made.of.slice(0, 5)),
         made.of.length,
@@ -52,7 +52,7 @@ export function finding({ imports, rows, layoutFault, checked, made, timeZone }:
     return {
       heading:
         inForce.length === 0
-          ? historyImportWords.earlierReadingsAreNot
+          ? historyImportWords.noneYet
           : historyImportWords.reduceFromInForce(
               inForce.reduce((n, i) => n + i.readings, 0),
               inForce.length,
@@ -68,7 +68,7 @@ export function finding({ imports, rows, layoutFault, checked, made, timeZone }:
     };
   if (checked.readings === 0)
     return {
-      heading: historyImportWords.noReadingCouldBe,
+      heading: historyImportWords.noneReadable,
       sentence: historyImportWords.lookAtTheColumns,
     };
   const period =
@@ -79,8 +79,8 @@ export function finding({ imports, rows, layoutFault, checked, made, timeZone }:
     heading: historyImportWords.wouldComeIn(checked.readings),
     sentence:
       checked.leftOut === 0
-        ? historyImportWords.everyCellCouldBe(period)
-        : historyImportWords.cantBeReadAnd(period, checked.leftOut),
+        ? historyImportWords.everyCellRead(period)
+        : historyImportWords.cellsUnreadable(period, checked.leftOut),
   };
 }
 

@@ -14,7 +14,7 @@ export function lettersFinding({ letters, sending, localPost }: LettersPage): {
   const where = localPost ? lettersWords.thisDemosLettersGo : lettersWords.aLetterIsMarked;
   if (!sending && waiting > 0)
     return {
-      finding: lettersWords.noMailServerIs(waiting),
+      finding: lettersWords.noMailServer(waiting),
       sentence: lettersWords.setTheMailServer,
     };
   if (lost > 0)
@@ -75,7 +75,7 @@ export function Letters({ page, timeZone }: { page: LettersPage; timeZone: strin
             )}
             {letter.received && (
               <details className="mt-1">
-                <summary className="target cursor-pointer text-petrol">{lettersWords.readItAsIt}</summary>
+                <summary className="target cursor-pointer text-petrol">{lettersWords.readAsReceived}</summary>
                 <iframe
                   title={lettersWords.letterSubject(letter.subject)}
                   sandbox=""

@@ -33,7 +33,7 @@ export function EndTokenDialog({ site, logger, token, operating, onClose }: Prop
   );
   const others = logger.tokens.filter((t) => t.state !== 'ended' && t.id !== token.id).length;
   return (
-    <Dialog open title={endTokenDialog.endTokenThis(token.name)} onClose={onClose}>
+    <Dialog open title={endTokenDialog.title(token.name)} onClose={onClose}>
       <form
         className="grid gap-4"
         onSubmit={(event) => {
@@ -41,7 +41,7 @@ export function EndTokenDialog({ site, logger, token, operating, onClose }: Prop
           end.mutate();
         }}
       >
-        <p>{endTokenDialog.whoeverSpeaksWithIt(others, logger.serial)}</p>
+        <p>{endTokenDialog.means(others, logger.serial)}</p>
         {operating && (
           <Field
             label={endTokenDialog.why}
@@ -53,7 +53,7 @@ export function EndTokenDialog({ site, logger, token, operating, onClose }: Prop
           />
         )}
         {end.error && (
-          <Notice kind="failed" title={endTokenDialog.theTokenWasNot}>
+          <Notice kind="failed" title={endTokenDialog.notEnded}>
             {end.error.message}
           </Notice>
         )}

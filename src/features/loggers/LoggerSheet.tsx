@@ -44,7 +44,7 @@ export function LoggerSheet({ logger, now, timeZone, mayManage, onNew, onEnd }: 
         <h3 className="text-[15px]">{loggerSheet.tokens}</h3>
         {mayManage && (
           <Button onClick={onNew}>
-            {alive.length === 0 ? loggerSheet.makeAToken : loggerSheet.makeANewToken}
+            {alive.length === 0 ? loggerSheet.makeFirstToken : loggerSheet.makeNewToken}
           </Button>
         )}
       </div>
@@ -59,7 +59,7 @@ export function LoggerSheet({ logger, now, timeZone, mayManage, onNew, onEnd }: 
             label: loggerSheet.token,
             cell: (t) => (
               <>
-                <span className="font-medium">{t.name || loggerSheet.withoutAName}</span>
+                <span className="font-medium">{t.name || loggerSheet.unnamed}</span>
                 <span className="block text-sm text-ink-2 md:hidden">
                   {loggerSheet.lastUsed}
                   {at(t.lastUsedAt)}
@@ -83,7 +83,7 @@ export function LoggerSheet({ logger, now, timeZone, mayManage, onNew, onEnd }: 
                   {t.endsAt && (
                     <span className="block text-sm text-ink-2">
                       {at(t.endsAt)}
-                      {t.endedBy && loggerSheet.byEndedBy(t.endedBy)}
+                      {t.endedBy && loggerSheet.endedBy(t.endedBy)}
                     </span>
                   )}
                 </>
@@ -103,7 +103,7 @@ export function LoggerSheet({ logger, now, timeZone, mayManage, onNew, onEnd }: 
           },
           {
             key: 'used',
-            label: loggerSheet.lastUsed2,
+            label: loggerSheet.lastUsedHeading,
             from: 'md',
             cell: (t) => (
               <>
@@ -122,7 +122,7 @@ export function LoggerSheet({ logger, now, timeZone, mayManage, onNew, onEnd }: 
                 <button
                   type="button"
                   className="target px-1 text-petrol hover:underline"
-                  aria-label={loggerSheet.endNowNameThe(t.name)}
+                  aria-label={loggerSheet.endNowLabel(t.name)}
                   onClick={() => onEnd(t)}
                 >
                   {loggerSheet.endNow}
@@ -136,13 +136,13 @@ export function LoggerSheet({ logger, now, timeZone, mayManage, onNew, onEnd }: 
       </h3>
       {logger.refusals.length > 0 && (
         <Table
-          caption={loggerSheet.whatWasRefusedOf(logger.serial)}
+          caption={loggerSheet.refusalsCaption(logger.serial)}
           rows={logger.refusals}
           rowKey={(r) => `${r.field} ${r.reason} ${r.firstAt}`}
           columns={[
             {
               key: 'what',
-              label: loggerSheet.whatWasWrongThe,
+              label: loggerSheet.newestRefusals,
               cell: (r) => (
                 <span className="break-words">
                   <code className="text-sm">{r.field}</code> {r.reason}

@@ -42,10 +42,15 @@ export function LoggersBoard({ initial, mayManage }: Props) {
         ]}
         finding={said.heading}
         sentence={said.sentence}
+        actions={
+          <ButtonLink href={paths.api.loggersCsv(site.id)} download>
+            CSV
+          </ButtonLink>
+        }
       />
       <NotRead
         error={error}
-        title={loggersBoard.theLoggersCouldNot}
+        title={loggersBoard.notReadAnew}
         kind="failed"
         onRetry={() => refetch()}
         className="mb-6"

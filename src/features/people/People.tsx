@@ -104,7 +104,7 @@ export function People({ initial, view: initialView, timeZone }: Props) {
         <>
           {SHORT_ROLE[p.role]}
           {p.role === 'customer' && (
-            <span className="block text-sm text-ink-2">{peopleWords.countedSitesSite(p.sites.length)}</span>
+            <span className="block text-sm text-ink-2">{peopleWords.sitesCount(p.sites.length)}</span>
           )}
         </>
       ),
@@ -212,7 +212,7 @@ export function People({ initial, view: initialView, timeZone }: Props) {
           send.mutate({
             path: paths.api.invitation(i.id),
             method: 'DELETE',
-            said: peopleWords.theInvitationOfHas(i.name),
+            said: peopleWords.invitationEnded(i.name),
           })
         }
       />
@@ -222,7 +222,7 @@ export function People({ initial, view: initialView, timeZone }: Props) {
           onSubmit={(event) => event.preventDefault()}
         >
           <SearchInput
-            label={peopleWords.filterByNameOr}
+            label={peopleWords.filterPlaceholder}
             value={view.q}
             onChange={(typed) => setView({ q: typed }, 'typed')}
             className="sm:w-[240px]"
@@ -265,7 +265,7 @@ export function People({ initial, view: initialView, timeZone }: Props) {
       <Dialog open={open?.kind === 'invite'} title={peopleWords.inviteSomebody} onClose={() => setOpen(null)}>
         {open?.kind === 'invite' && (
           <>
-            <p className="mb-4 text-ink-2">{peopleWords.aLetterWithA}</p>
+            <p className="mb-4 text-ink-2">{peopleWords.inviteHint}</p>
             <PersonForm
               draft={open.draft}
               sites={page.sites}
@@ -277,7 +277,7 @@ export function People({ initial, view: initialView, timeZone }: Props) {
                   path: paths.api.invitations(),
                   method: 'POST',
                   body: { ...draft, sites: draft.role === 'customer' ? draft.sites : [] },
-                  said: peopleWords.anInvitationIsOn(draft.email),
+                  said: peopleWords.invitationSent(draft.email),
                 })
               }
             />
@@ -315,7 +315,7 @@ export function People({ initial, view: initialView, timeZone }: Props) {
                 send.mutate({
                   path: paths.api.personTokens(open.person.id),
                   method: 'DELETE',
-                  said: peopleWords.theTokensOfHave(open.person.name),
+                  said: peopleWords.tokensEnded(open.person.name),
                 })
               }
             />
@@ -382,7 +382,7 @@ function Invitations({
                 {i.name}, {SHORT_ROLE[i.role]}
               </p>
               <p className="break-all text-sm text-ink-2">
-                {peopleWords.emailByInvitedBy(i.email, i.invitedBy)}
+                {peopleWords.invitedAs(i.email, i.invitedBy)}
                 <RelativeTime at={i.createdAt} now={page.at} timeZone={timeZone} />
               </p>
             </div>

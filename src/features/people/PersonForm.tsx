@@ -7,10 +7,10 @@ import type { PeoplePage } from '../../schemas/api/people';
 import { personForm } from '../../words/people';
 
 export const ROLE_WORDS: Record<Role, string> = {
-  manager: personForm.managerEverythingAndWho,
-  technician: personForm.commissioningTechnicianBuildsChecks,
-  analyst: personForm.oMAnalystWatches,
-  customer: personForm.customerSeesTheSites,
+  manager: personForm.roleManager,
+  technician: personForm.roleTechnician,
+  analyst: personForm.roleAnalyst,
+  customer: personForm.roleCustomer,
 };
 
 export interface PersonDraft {
@@ -89,7 +89,7 @@ export function PersonForm({ draft, sites, fixedEmail, fixedRole, fault, busy, s
             {ROLE_WORDS[role]}
           </label>
         ))}
-        {fixedRole && <p className="text-sm text-ink-2">{personForm.nobodyChangesTheirOwn}</p>}
+        {fixedRole && <p className="text-sm text-ink-2">{personForm.ownRoleFixed}</p>}
       </fieldset>
       {typed.role === 'customer' && (
         <fieldset aria-describedby={faultOf('sites') ? 'sites-fault' : undefined}>

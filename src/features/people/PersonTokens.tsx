@@ -15,7 +15,7 @@ export function PersonTokens({
   if (person.tokens === 0) return null;
   return (
     <div className="mt-5 border-t border-rule pt-4">
-      <p>{personTokens.inForceByWhich(person.tokens, person.name)}</p>
+      <p>{personTokens.tokensInForce(person.tokens, person.name)}</p>
       <Button className="mt-3" disabled={busy} onClick={onEnd}>
         {person.tokens === 1 ? personTokens.endTheToken : personTokens.endAllTokens(person.tokens)}
       </Button>

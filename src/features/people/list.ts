@@ -29,12 +29,12 @@ export function peopleFinding({ people, invitations }: PeoplePage): { finding: s
   const active = people.filter((p) => p.active);
   const managers = active.filter((p) => p.role === 'manager');
   const open = invitations.filter((i) => i.state === 'open').length;
-  const waiting = open > 0 ? ` ${peopleList.countedOpenInvitationWaits(open)}.` : '';
+  const waiting = open > 0 ? ` ${peopleList.invitationsWaiting(open)}.` : '';
   return {
-    finding: peopleList.active1OnePerson(active.length),
+    finding: peopleList.whoCanSignIn(active.length),
     sentence:
       managers.length === 1
-        ? peopleList.isTheOnlyManager(managers[0]?.name, waiting)
-        : peopleList.ofThemAreManagers(managers.length, waiting),
+        ? peopleList.onlyManager(managers[0]?.name, waiting)
+        : peopleList.managersAmongThem(managers.length, waiting),
   };
 }

@@ -78,10 +78,10 @@ export function OrganisationSheet({ settings, mayWrite, onSaved }: Props) {
             value={currency}
             onChange={setCurrency}
             options={[
-              { value: '', label: organisationSheet.noneNoMoneyIs },
+              { value: '', label: organisationSheet.noMoney },
               ...CURRENCIES.map((code) => ({ value: code, label: code })),
             ]}
-            hint={organisationSheet.pricesAKWhAre}
+            hint={organisationSheet.moneyHint}
             error={error('currency')}
           />
           <Choice
@@ -103,7 +103,7 @@ export function OrganisationSheet({ settings, mayWrite, onSaved }: Props) {
             placeholder="90"
             onChange={(e) => setHide(e.target.value)}
             error={error('hideRawAfterDays')}
-            hint={organisationSheet.emptyAsLongAs}
+            hint={organisationSheet.retentionHint}
           />
         </fieldset>
         {mayWrite && (

@@ -12,7 +12,7 @@ export function Saved({ kept, fault }: { kept: boolean; fault: ApiError | null }
         </Notice>
       )}
       {fault && (
-        <Notice kind="failed" title={fault.fields.length > 0 ? saved.notSavedSeeThe : fault.title}>
+        <Notice kind="failed" title={fault.fields.length > 0 ? saved.notSaved : fault.title}>
           {fault.fields.length > 0 ? '' : fault.message}
         </Notice>
       )}

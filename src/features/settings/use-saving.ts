@@ -19,7 +19,7 @@ export function useSaving(onSaved: (settings: OrganisationSettings) => void) {
       setFault(
         error instanceof ApiError
           ? error
-          : new ApiError(0, settingsUseSaving.notSaved, settingsUseSaving.itCouldNotBe),
+          : new ApiError(0, settingsUseSaving.notSaved, settingsUseSaving.notSent),
       );
     }
     setBusy(false);

@@ -97,9 +97,9 @@ export async function askForPassword(email: string, address: string, at: Date): 
     });
     const { text, html } = letter({
       greeting: accountLetters.helloPerson(person.name),
-      paragraphs: [accountLetters.somebodyMostLikelyYou, accountLetters.theLinkBelowWorks(RESET_HOURS)],
+      paragraphs: [accountLetters.askedForPassword, accountLetters.theLinkBelowWorks(RESET_HOURS)],
       action: { words: accountLetters.setANewPassword, href: `${publicUrl()}${paths.newPassword(token)}` },
-      footer: accountLetters.ifItWasNot,
+      footer: accountLetters.notYou,
     });
     await addMessage(tx, {
       organisationId: person.organisationId,
@@ -108,7 +108,7 @@ export async function askForPassword(email: string, address: string, at: Date): 
       kind: 'password_reset',
       eventKey: `account_link:${hash.toString('hex')}`,
       to: { address: person.email, name: person.name },
-      subject: accountLetters.aNewPasswordFor,
+      subject: accountLetters.newPasswordSubject,
       text,
       html,
     });

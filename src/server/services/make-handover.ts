@@ -67,7 +67,7 @@ export async function makeHandover(
   const open = openGaps(commissioningSteps(facts));
   if (open.length > 0)
     throw new AppError('conflict', {
-      message: lettersSentMakeHandover.open1OnePoint(open.length),
+      message: lettersSentMakeHandover.pointsOpen(open.length),
       fields: open.slice(0, 50).map((gap) => ({ field: gap.key, message: gap.words })),
     });
 
@@ -135,9 +135,9 @@ async function tellOf(tx: Tx, site: VisibleSite, pack: { ref: string; version: n
       greeting: lettersSentMakeHandover.helloCustomer(customer.name),
       paragraphs: [
         pack.version === 1
-          ? lettersSentMakeHandover.theSolarSystemOf(site.name)
-          : lettersSentMakeHandover.thePapersOfHave(site.name, pack.version),
-        lettersSentMakeHandover.keepThemWhereThe,
+          ? lettersSentMakeHandover.handedOver(site.name)
+          : lettersSentMakeHandover.papersRenewed(site.name, pack.version),
+        lettersSentMakeHandover.keepPapers,
       ],
       action: { words: lettersSentMakeHandover.seeYourSiteAnd, href },
       footer: lettersSentMakeHandover.youGetThisLetter(site.name),

@@ -143,7 +143,7 @@ export function gatheredWords(
     todo.length > 0
       ? noticeDigest.thingsToDo(todo.length, lossWh, amount)
       : over.length > 0 && other.length === 0
-        ? noticeDigest.nothingHasToBe(over.length)
+        ? noticeDigest.nothingToDo(over.length)
         : noticeDigest.nothingHasToBeDone(kept.length);
   return {
     finding,

@@ -149,7 +149,7 @@ function hazardParts(telling: Telling, person: RecipientRow): LetterParts {
     caution: CAUTION,
     figures,
     action: {
-      words: over ? noticeLetters.seeWhatHappened : noticeLetters.acknowledgeAndCallThe,
+      words: over ? noticeLetters.seeWhatHappened : noticeLetters.acknowledgeAndCall,
       href: publicUrl() + telling.href,
     },
     footer: noticeLetters.youGetThisLetter(person.organisationName, KINDS.hazard.fixed),
@@ -171,7 +171,7 @@ function commonParts(telling: Telling, person: RecipientRow): LetterParts {
       fullTime(cause?.since ?? event.at, person.timeZone),
     ],
     ...(cause?.lossWhDay
-      ? [[noticeLetters.costsAbout, noticeLetters.lossWhDayADay(cause.lossWhDay)] as [string, string]]
+      ? [[noticeLetters.costsAbout, noticeLetters.lossADay(cause.lossWhDay)] as [string, string]]
       : []),
   ];
   return {

@@ -117,25 +117,21 @@ async function partsOf(tx: Tx, one: AskedLetter, period: LetterPeriod) {
   const made = energy(now.energyKWh * 1000);
   const finding =
     days.length === 0
-      ? roofLetters.noDataCameFrom(one.siteName, period.label)
+      ? roofLetters.noDataHeading(one.siteName, period.label)
       : roofLetters.madeIn(one.siteName, made, period.label);
   return {
     greeting: roofLetters.helloPersonName(one.personName),
     finding,
     paragraphs: [
       days.length === 0
-        ? roofLetters.nothingIsKnownOf(one.organisation)
+        ? roofLetters.nothingKnown(one.organisation)
         : [
             same !== null && same.before > 0
               ? roofLetters.yearBefore(changeSentence(same), same.days, asked)
               : '',
-            now.completeness < NO_DATA_BELOW ? roofLetters.ofTheReadingsAre(now.completeness) : '',
+            now.completeness < NO_DATA_BELOW ? roofLetters.readingsMissing(now.completeness) : '',
             now.lostMinutes > 0
-              ? roofLetters.itStoodStillFor(
-                  now.lostMinutes,
-                  Math.round(now.lostMinutes / 60),
-                  now.lostMinutesGrid,
-                )
+              ? roofLetters.stoodStill(now.lostMinutes, Math.round(now.lostMinutes / 60), now.lostMinutesGrid)
               : '',
           ]
             .filter(Boolean)
@@ -151,7 +147,7 @@ async function partsOf(tx: Tx, one: AskedLetter, period: LetterPeriod) {
       [
         roofLetters.lastShutdownTest,
         test
-          ? `${longDate(test.at, 'UTC')}, ${test.result === 'passed' ? 'passed' : test.result === 'failed' ? roofLetters.notPassedTreatThe : roofLetters.notMeasuredWithA}`
+          ? `${longDate(test.at, 'UTC')}, ${test.result === 'passed' ? 'passed' : test.result === 'failed' ? roofLetters.testNotPassed : roofLetters.testNotMeasured}`
           : roofLetters.noneOnRecord,
       ],
     ] as [string, string][],
@@ -160,7 +156,7 @@ async function partsOf(tx: Tx, one: AskedLetter, period: LetterPeriod) {
       rest: roofLetters.evenShutDownEvery,
     },
     action: { words: roofLetters.lookAtYourRoof, href: `${publicUrl()}${paths.customer(one.siteRef)}` },
-    footer: roofLetters.organisationLooksAfterThis(one.organisation, one.phone, one.every),
+    footer: roofLetters.whyThisLetter(one.organisation, one.phone, one.every),
     wayOut: {
       words: roofLetters.chooseHowOftenIt,
       href: `${publicUrl()}${paths.customer(one.siteRef)}#letter`,
@@ -170,6 +166,6 @@ async function partsOf(tx: Tx, one: AskedLetter, period: LetterPeriod) {
 
 function changeSentence(same: { now: number; before: number }): string {
   const change = same.now / same.before - 1;
-  if (Math.abs(change) < 0.02) return roofLetters.thatIsAboutAs;
-  return roofLetters.thatIsThanIn(Math.abs(change), change);
+  if (Math.abs(change) < 0.02) return roofLetters.aboutAsMuch;
+  return roofLetters.comparedWith(Math.abs(change), change);
 }
