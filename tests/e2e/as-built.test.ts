@@ -98,7 +98,7 @@ describe.each([
       [`Ferry Sheds ${tag}`],
     );
     expect(rows).toEqual([{ placed: 8, slots: 8 }]);
-  }, 120_000);
+  });
 
   it('its logger comes with the token that was shown once, and gets this as-built', async () => {
     const roster = await rosterFor(token, `LG-${tag}`);
@@ -111,7 +111,7 @@ describe.each([
 
   it('swaps two units and replaces one, with the reason; the history shows a unit’s life', async () => {
     await changeUnits(page, journey());
-  }, 60_000);
+  });
 
   it('two people at one plane: the second is told who changed what, and keeps what was typed', async () => {
     const other = await signedIn('manager', width, theme);
@@ -130,7 +130,7 @@ describe.each([
     );
     expect(rows).toEqual([{ tilt: 17, name: 'Southern roof' }]);
     await other.close();
-  }, 60_000);
+  });
 
   it('no page was too wide, and axe found nothing', () => {
     expect(faults).toEqual([]);

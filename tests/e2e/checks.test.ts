@@ -93,24 +93,24 @@ describe.each([
       { note: 'seen from the ladder', first: true },
       { note: 'one clip added', first: false },
     ]);
-  }, 60_000);
+  });
 
   it('figures are checked before they are sent, photos are shown, a web page is none', async () => {
     const { refused } = await recordAndShow(page, journey(), string);
     expect(refused).toContain('This is a web page');
-  }, 60_000);
+  });
 
   it('the matrix can be searched by address, and axe finds nothing on it', async () => {
     await page.goto(`${site.url}/commissioning/${fleet.site(HALL).ref}/checks?show=blocked&find=d1`);
     await journey().look(page, 'the matrix');
     expect(await page.locator('table tbody tr').count()).toBe(1);
-  }, 30_000);
+  });
 
   it('readings that are not as expected are found and explained, never called safe', async () => {
     const { open } = await readReadings(page, journey());
     expect(open).toContain('A lead is open');
     expect(open).not.toMatch(/\bsafe\b/i);
-  }, 30_000);
+  });
 
   it('no page was too wide, and axe found nothing', () => {
     expect(faults).toEqual([]);
@@ -136,5 +136,5 @@ describe('a pair of connectors without a document', () => {
     expect(rows).toEqual([{ name: 'Orla Nettlebeck' }]);
     await context.close();
     await analyst.close();
-  }, 60_000);
+  });
 });

@@ -340,6 +340,16 @@ const PAGES: readonly Shown[] = [
   },
 ];
 
+/** How many headings of the first level a page has once the first is seen: what a phone keeps is read from its store. */
+const headingsOf = (page: Page): Promise<number> =>
+  page.evaluate(async () => {
+    const headings = document.getElementsByTagName('h1');
+    const seen = () => headings[0]?.checkVisibility({ visibilityProperty: true }) ?? false;
+    for (let tries = 0; !seen() && tries < 1000; tries++)
+      await new Promise((resolve) => setTimeout(resolve, 20));
+    return seen() ? headings.length : 0;
+  });
+
 /** Everything that is wrong with a page, in each look; empty: nothing. */
 async function faultsOf(page: Page, shown: Shown): Promise<string[]> {
   const faults: string[] = [];
@@ -353,8 +363,7 @@ async function faultsOf(page: Page, shown: Shown): Promise<string[]> {
   const response = await page.goto(site.url + shown.path(), { waitUntil: 'load' });
   if (response?.status() !== (shown.status ?? 200)) faults.push(`status ${response?.status()}`);
   await hydrated(page); // without a word in the console
-  await page.locator('h1').first().waitFor(); // what a phone keeps is read from its store first
-  const headings = await page.locator('h1').count();
+  const headings = await headingsOf(page);
   if (headings !== 1) faults.push(`${headings} headings of the first level`);
   for (const look of LOOKS) {
     await lookAs(page, look);

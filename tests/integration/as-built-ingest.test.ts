@@ -151,7 +151,7 @@ describe('an as-built that is made while readings come in', () => {
     await logger.durable(frames(1, 3));
     // the site is new to the judgement too: it is taken with the next sweep
     await until(async () => (await slots('A1')).every((s) => s.state === 'passing'), 'judged', 20_000);
-  }, 40_000);
+  });
 
   it('a unit is replaced: a new version, and the slot begins anew while the others go on', async () => {
     await place('A1', { 2: 'NEW-A1-2B' });

@@ -27,16 +27,38 @@ export const startBrowser = (more: readonly string[] = []): Promise<Browser> =>
     args: [...FLAGS, ...more],
   });
 
-/** Waits until the islands of a page have taken over: what is done before falls on deaf ears. */
-export const hydrated = (page: Page): Promise<unknown> =>
-  page.waitForFunction(() =>
-    [...document.querySelectorAll('astro-island[client="load"]')].every((island) => {
-      if (island.hasAttribute('ssr')) return false;
-      // the attribute goes when hydration begins; elements that React has taken over carry its mark
-      const first = island.querySelector(':scope > :not(template, script, style, link)');
-      return !first || Object.keys(first).some((key) => key.startsWith('__reactProps'));
-    }),
-  );
+/** How long a page may take to get ready, milliseconds. */
+const READY_WITHIN_MS = 60_000;
+
+/**
+ * Waits until the islands of a page have taken over: what is done before falls on deaf ears. The page looks for itself:
+ * each question from outside would have it read Playwright's scripts anew.
+ */
+export async function hydrated(page: Page): Promise<void> {
+  const until = Date.now() + READY_WITHIN_MS;
+  for (;;)
+    try {
+      await page.evaluate(async (untilMs) => {
+        const waiting = (): Element[] =>
+          [...document.querySelectorAll('astro-island[client="load"]')].filter((island) => {
+            if (island.hasAttribute('ssr')) return true;
+            // the attribute goes when hydration begins; elements that React has taken over carry its mark
+            const first = island.querySelector(':scope > :not(template, script, style, link)');
+            return first && !Object.keys(first).some((key) => key.startsWith('__reactProps'));
+          });
+        while (waiting().length > 0) {
+          if (Date.now() > untilMs)
+            throw new Error(`never alive: ${waiting().map((i) => i.getAttribute('component-url'))}`);
+          await new Promise((resolve) => setTimeout(resolve, 20));
+        }
+      }, until);
+      return;
+    } catch (error) {
+      // the page was left for the next one while it was looked at
+      if (!/context was destroyed|navigat/i.test(String(error)) || Date.now() > until) throw error;
+      await page.waitForLoadState('domcontentloaded');
+    }
+}
 
 /** Waits until type is loaded and a change of size or colours has been drawn. */
 export const settled = (page: Page): Promise<unknown> =>
