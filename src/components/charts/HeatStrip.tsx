@@ -13,6 +13,7 @@ import {
   type HeatCell,
   type HeatModel,
 } from './heat';
+import { FiguresTable } from './FiguresTable';
 import { useWidth } from './near';
 import { heatStrip } from '../../words/charts';
 
@@ -176,44 +177,19 @@ function Legend({ model, range }: { model: HeatModel; range: [number, number] })
 
 function HeatTable({ model }: { model: HeatModel }) {
   return (
-    <div
-      className="max-h-[380px] overflow-auto"
-      tabIndex={0}
-      role="region"
-      aria-label={heatStrip.modelFigures(model.title)}
-    >
-      <table className="border-collapse text-right text-sm">
-        <caption className="sr-only">
-          {model.title}, {model.unit}
-        </caption>
-        <thead className="sticky top-0 bg-sheet text-ink-2">
-          <tr className="border-b border-rule">
-            <th scope="col" className="py-1.5 pr-4 text-left font-medium">
-              {heatStrip.time}
-            </th>
-            {model.rows.map((r) => (
-              <th key={r.position} scope="col" className="px-2 py-1.5 font-medium">
-                {r.position}
-              </th>
-            ))}
-          </tr>
-        </thead>
-        <tbody>
-          {model.at.map((at, s) => (
-            <tr key={at} className="border-b border-rule-faint">
-              <th scope="row" className="py-1 pr-4 text-left font-normal">
-                {clock(at * 1000, model.timeZone)}
-              </th>
-              {model.rows.map((r) => (
-                <td key={r.position} className="px-2 py-1">
-                  {number(r.values[s], model.digits)}
-                </td>
-              ))}
-            </tr>
-          ))}
-        </tbody>
-      </table>
-    </div>
+    <FiguresTable
+      title={model.title}
+      unit={model.unit}
+      label={heatStrip.modelFigures(model.title)}
+      height={380}
+      heads={[heatStrip.time, ...model.rows.map((r) => String(r.position))]}
+      rows={model.at.map((at, s) => ({
+        key: at,
+        time: clock(at * 1000, model.timeZone),
+        cells: model.rows.map((r) => number(r.values[s], model.digits)),
+      }))}
+      dense
+    />
   );
 }
 
