@@ -5,19 +5,27 @@ import type { Actor } from '../../src/domain/access/permissions';
 import type { CaseKind } from '../../src/domain/cases/cases';
 import { checklistOf } from '../../src/domain/cases/checklists';
 import { database } from '../../src/server/db/pools';
+import { asActor } from '../../src/server/db/transaction';
 import { nightsDue } from '../../src/server/jobs/nights-due';
 import { judgeNight } from '../../src/server/jobs/output-night';
 import { tellGathered } from '../../src/server/jobs/tell';
+import { siteFiguresCsv } from '../../src/server/reports/figures/csv';
+import { monthReportPdf } from '../../src/server/reports/figures/month-report';
+import { siteWords } from '../../src/server/reports/figures/words';
 import { setRollupWatermark } from '../../src/server/queries/rollup';
 import { checkClosedCases } from '../../src/server/services/check-closed-cases';
+import { siteFigures } from '../../src/server/services/figures';
 import { Draw, drawPlant } from '../bench/diagnosis/plants';
 import { testDatabase, type TestDatabase } from '../support/database';
+import { pdfPages } from '../support/pdf';
 import { tellAll } from '../support/happenings';
 import {
   analystOf,
   caseOf,
+  causeLines,
   closeCase,
   LivePlant,
+  newestEvent,
   openCauses,
   readCase,
   type OpenCause,
@@ -64,16 +72,16 @@ afterAll(async () => {
 });
 
 const open = (): Promise<OpenCause[]> => openCauses(db);
-const told = async (sinceId: number): Promise<string[]> =>
+const told = (sinceId: number): Promise<string[]> => causeLines(db, sinceId);
+const lastEvent = (): Promise<number> => newestEvent(db);
+
+/** Letters written so far: "Mara: One thing to do". */
+const letters = async (): Promise<string[]> =>
   (
     await db.owner.query<{ line: string }>(
-      `select replace(kind, 'cause_', '') || ' ' || (detail ->> 'kind') as line from event
-       where kind like 'cause%' and id > $1 order by id`,
-      [sinceId],
+      `select to_name || ': ' || subject as line from message order by 1`,
     )
   ).rows.map((r) => r.line);
-const lastEvent = async (): Promise<number> =>
-  (await db.owner.query<{ id: number }>('select coalesce(max(id), 0) as id from event')).rows[0]?.id ?? 0;
 
 const stringOf = (letter: string, nth: number) =>
   plan.strings.filter((s) => s.name.startsWith(letter))[nth - 1]!;
@@ -318,5 +326,73 @@ describe('a month without data', { timeout: 300_000 }, () => {
     expect(causes.map((c) => c.kind)).toEqual(['low_output', 'silent']);
     // the logger was cut off the day before as well: it is that cause again, told once
     expect(await told(before)).toEqual(['reopened silent']);
+    expect(causes[1]?.part).toBe(`logger ${plan.loggers[0]!.serial}`);
+    expect(causes.map((c) => c.loss)).toEqual([1800, 0]); // nothing is reckoned where nothing is known
+
+    // everybody read of it once and got one letter, the next morning
+    const notices = await db.owner.query<{ who: string; headline: string; body: string; over: boolean }>(
+      `select p.name as who, n.headline, n.body, n.over_at is not null as over
+       from notice n join person p on p.id = n.person_id order by n.id`,
+    );
+    expect(new Set(notices.rows.map((n) => n.who)).size).toBe(notices.rows.length);
+    for (const n of notices.rows) {
+      expect(n.headline).toBe(`Again: ${causes[1]?.headline}`);
+      // what its inputs said last is not what flows now
+      expect(n.body).not.toContain('flows');
+      expect(n.body).toContain('a shutdown can’t be confirmed: treat them as live');
+      expect(n.over).toBe(false);
+    }
+    expect(await letters()).toEqual(notices.rows.map((n) => `${n.who}: One thing to do`).sort());
+    const nights = await db.owner.query<{ outcome: string; n: number }>(
+      `select outcome, count(distinct day)::int as n from output_day where day > $1 group by 1`,
+      [beganAt],
+    );
+    expect(nights.rows).toMatchObject([{ outcome: 'cant_tell' }]);
+    expect(nights.rows[0]?.n).toBeGreaterThanOrEqual(days - 1);
+  });
+
+  it('says of the month that nothing of it is known, on the page, in the file and on paper', async () => {
+    const at = live.date();
+    const month = new Date(at.getTime() - 12 * 86_400_000).toISOString().slice(0, 7);
+    // the plant was on record before
+    await db.owner.query(
+      `insert into site_day (day, site_id, energy_ac, energy_dc) values ($1::timestamptz - interval '60 days', $2, 90000, 93000)`,
+      [at, live.site.id],
+    );
+    const f = await asActor(analyst, (tx) => siteFigures(tx, live.site.ref, month, at));
+    const words = siteWords(f);
+    expect(words.finding).toMatch(/^No day of/);
+    expect(words.sentence).toContain('should have');
+    expect(f.now).toMatchObject({ days: 0 });
+    expect(f.now?.completeness ?? 0).toBe(0);
+    expect((await pdfPages(await monthReportPdf(f))).join(' ').replace(/\s+/g, ' ')).toContain(
+      words.finding.replace(/\s+/g, ' '),
+    );
+    expect(await siteFiguresCsv(f).text()).not.toContain('90000');
+  });
+
+  it('is over when data return: told once, no false cause, and what was low before is judged by its days', async () => {
+    const [first] = (await db.owner.query<{ n: number }>('select count(*)::int as n from notice')).rows;
+    await db.owner.query(`select ensure_days($1::date, $1::date + 2)`, [live.date()]);
+    const before = await lastEvent();
+    live.uplink = true;
+    await live.minutes(6);
+    await tellAll(live.date());
+    expect((await told(before)).filter((e) => !e.startsWith('changed'))).toEqual(['closed silent']);
+    expect((await open()).map((c) => c.kind)).toEqual(['low_output']);
+    // it is over once it has stayed away for half an hour
+    for (let k = 0; k < 2; k++) {
+      const later = new Date(live.date().getTime() + 35 * 60_000);
+      await tellAll(later);
+      await tellGathered(later);
+    }
+    const over = await db.owner.query<{ headline: string; over: boolean }>(
+      `select headline, over_at is not null as over from notice order by id`,
+    );
+    const again = over.rows.filter((n) => n.headline.startsWith('Again'));
+    expect(again.every((n) => n.over)).toBe(true);
+    expect(again).toHaveLength(first?.n ?? 0);
+    expect(over.rows.filter((n) => n.headline.startsWith('Over: ')).length).toBeLessThanOrEqual(again.length);
+    expect(await letters()).toHaveLength(again.length);
   });
 });

@@ -29,6 +29,8 @@ export interface OpenCause {
   part: string | null;
   units: number;
   key: string;
+  /** Wh so far. */
+  loss: number;
   strings: string[];
   places: { string: string; position: number | null }[];
 }
@@ -47,13 +49,28 @@ export async function analystOf(db: TestDatabase): Promise<Actor> {
 export async function openCauses(db: TestDatabase): Promise<OpenCause[]> {
   const { rows } = await db.owner.query<OpenCause>(
     `select id, ref, kind, headline, shared_part ->> 'kind' || ' ' || (shared_part ->> 'name') as part,
-       jsonb_array_length(units) as units, key,
+       jsonb_array_length(units) as units, key, loss_wh as loss,
        array(select distinct u ->> 'stringId' from jsonb_array_elements(units) u) as strings,
        (select jsonb_agg(jsonb_build_object('string', u ->> 'stringId', 'position', (u ->> 'position')::int))
         from jsonb_array_elements(units) u) as places
      from cause where closed_at is null order by kind, id`,
   );
   return rows;
+}
+
+/** What happened to causes after an event: "opened stuck". */
+export async function causeLines(db: TestDatabase, sinceId: number): Promise<string[]> {
+  const { rows } = await db.owner.query<{ line: string }>(
+    `select replace(kind, 'cause_', '') || ' ' || (detail ->> 'kind') as line from event
+     where kind like 'cause%' and id > $1 order by id`,
+    [sinceId],
+  );
+  return rows.map((r) => r.line);
+}
+
+export async function newestEvent(db: TestDatabase): Promise<number> {
+  const { rows } = await db.owner.query<{ id: number }>('select coalesce(max(id), 0) as id from event');
+  return rows[0]?.id ?? 0;
 }
 
 /** Opens a case from a cause, as its page does. @returns the case's reference */

@@ -124,6 +124,12 @@ export function evidenceWords(
     const alive = aliveInputs(items, site);
     if (alive !== null) sentences.push(alive);
   }
+  if (verdict === 'silent')
+    sentences.push(
+      items.length === 1
+        ? 'While it is silent, a shutdown can’t be confirmed: treat it as live.'
+        : 'While they are silent, a shutdown can’t be confirmed: treat them as live.',
+    );
   if (cause.mode === 'cross_talk')
     sentences.push(
       `Their own transmitters are off; ${named('transmitter', cause.part.name)}, which they should not hear, still sends.`,

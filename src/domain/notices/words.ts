@@ -59,7 +59,7 @@ export function noticeWords(told: Told, event: NoticeEvent, cause: CauseWords | 
             ? `${OVER} That is no proof: isolate, lock out and prove dead before any work, as ever.`
             : OVER,
         };
-      const back = kind === 'cause_reopened' ? `Back: ${headline}` : headline;
+      const back = kind === 'cause_reopened' ? `Again: ${headline}` : headline;
       if (hazard) return { headline: back, body: liveWords(cause?.units ?? []) };
       return { headline: back, body: cause?.evidence ?? '' };
     }

@@ -5,7 +5,8 @@ import { gatewaysOf, markGateways } from '../queries/gateways';
 
 /**
  * Gateways that nobody is heard through while their units should speak, and those that are heard again: an event each,
- * once. A gateway whose units are all dark is no news: the night silences them.
+ * once. A gateway whose units are all dark is no news: the night silences them. Of one whose logger is cut off nothing is
+ * known.
  */
 export async function judgeGateways(
   tx: Tx,
@@ -25,6 +26,7 @@ export async function judgeGateways(
       reached.set(slot.gateway, of);
     }
   const gateways = await gatewaysOf(tx, site.id);
+  const cutOff = new Set(condition.loggers.filter((l) => !l.connected).map((l) => l.name));
   const fallen: { id: number; name: string; units: number; sinceS: number }[] = [];
   const back: { id: number; name: string; sinceS: number }[] = [];
   for (const g of gateways) {
@@ -32,7 +34,7 @@ export async function judgeGateways(
     if (lastS === null) continue;
     const of = reached.get(g.name);
     if (g.silentSinceS === null) {
-      if (atS - lastS >= limitS && of && of.silent > 0 && of.silent === of.units)
+      if (!cutOff.has(g.logger) && atS - lastS >= limitS && of && of.silent > 0 && of.silent === of.units)
         fallen.push({ id: g.id, name: g.name, units: of.units, sinceS: lastS });
     } else if (lastS > g.silentSinceS) back.push({ id: g.id, name: g.name, sinceS: lastS });
   }

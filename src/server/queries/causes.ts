@@ -42,7 +42,7 @@ export interface CauseSiteRow {
   transmitters: { name: string; zone: string; inForce: InForce | null }[];
   gateways: { loggerId: number; number: number; name: string; lastHeardS: number | null }[];
   loggers: { name: string; lastSpokeS: number | null; connected: boolean }[];
-  inputs: { inverter: string; number: number; current: number | null }[]; // cA
+  inputs: { inverter: string; number: number; current: number | null; atS: number | null }[]; // cA
   /** Wh that a unit makes on a middling day of the last week; null: not known. */
   unitDayWh: number | null;
 }
@@ -122,7 +122,8 @@ async function concernedSites(
             coalesce((select json_agg(json_build_object('name', l.serial, 'connected', l.connected_at is not null,
                         'lastSpokeS', extract(epoch from l.last_spoke_at)::int8))
                       from logger l where l.site_id = c.id), '[]') as loggers,
-            coalesce((select json_agg(json_build_object('inverter', inv.name, 'number', i.number, 'current', ist.current))
+            coalesce((select json_agg(json_build_object('inverter', inv.name, 'number', i.number, 'current', ist.current,
+                        'atS', extract(epoch from ist.at)))
                       from input i join inverter inv on inv.id = i.inverter_id
                       left join input_state ist on ist.input_id = i.id where i.site_id = c.id), '[]') as inputs
      from concerned c

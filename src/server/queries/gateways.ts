@@ -1,16 +1,19 @@
 import type { Tx } from '../db/transaction';
 
+export interface GatewayHeard {
+  id: number;
+  name: string;
+  logger: string;
+  lastHeardS: number | null;
+  silentSinceS: number | null;
+}
+
 /** Gateways of a site, when each was last heard and since when it is known to be silent. Epoch seconds. */
-export async function gatewaysOf(
-  tx: Tx,
-  siteId: number,
-): Promise<{ id: number; name: string; lastHeardS: number | null; silentSinceS: number | null }[]> {
-  const { rows } = await tx.raw<{
-    rows: { id: number; name: string; lastHeardS: number | null; silentSinceS: number | null }[];
-  }>(
-    `select id, name, extract(epoch from last_heard_at)::float8 as "lastHeardS",
-            extract(epoch from silent_since)::float8 as "silentSinceS"
-     from gateway where site_id = ? order by id`,
+export async function gatewaysOf(tx: Tx, siteId: number): Promise<GatewayHeard[]> {
+  const { rows } = await tx.raw<{ rows: GatewayHeard[] }>(
+    `select g.id, g.name, l.serial as logger, extract(epoch from g.last_heard_at)::float8 as "lastHeardS",
+            extract(epoch from g.silent_since)::float8 as "silentSinceS"
+     from gateway g join logger l on l.id = g.logger_id where g.site_id = ? order by g.id`,
     [siteId],
   );
   return rows;
