@@ -3,6 +3,7 @@ import type { SeededSite } from '../../seeds/plant/seeded';
 import { keepDays } from '../../src/server/jobs/keep-days';
 import { mergeLateFrames } from '../../src/server/jobs/late-frames';
 import { rollUpClosed, rollUpDirty } from '../../src/server/jobs/roll-up';
+import { forgetSuperseded, readQueue } from '../../src/server/jobs/queue';
 import { startWorker, stopWorker } from '../../src/server/jobs/worker';
 import { closePools, connect } from '../../src/server/db/pools';
 import { ensureDays, parkFrames, writeFrames } from '../../src/server/queries/ingest-frames';
@@ -274,6 +275,14 @@ describe('the worker', () => {
       15_000,
     );
     await stopWorker();
+    // it failed while the next of its key was asked for: the library leaves it without key and tries
+    await db.owner.query(`select graphile_worker.add_job('roll_up', job_key => 'roll_up')`);
+    await db.owner.query(
+      `update graphile_worker._private_jobs set key = null, attempts = max_attempts, last_error = 'x'`,
+    );
+    await db.owner.query(`select graphile_worker.add_job('roll_up', job_key => 'roll_up')`);
+    expect(await readQueue(10)).toMatchObject([{ key: 'roll_up', error: null }]);
+    expect([await forgetSuperseded(), await forgetSuperseded()]).toEqual([1, 0]);
     await closePools();
   });
 });

@@ -1,6 +1,6 @@
 import { makeWorkerUtils, type WorkerUtils } from 'graphile-worker';
 import { config } from '../config';
-import { queuedJobs, queueExists, type QueuedJob } from '../queries/job-queue';
+import { dropSuperseded, queuedJobs, queueExists, type QueuedJob } from '../queries/job-queue';
 import { logger } from './logger';
 
 /** The queue from outside the worker: what waits in it, and trying again. */
@@ -20,6 +20,10 @@ export function readQueue(limit: number): Promise<QueuedJob[] | null> {
     utils.withPgClient(async (client) => ((await queueExists(client)) ? queuedJobs(client, limit) : null)),
   );
 }
+
+/** Takes away failed jobs in whose place another has come. @returns how many */
+export const forgetSuperseded = (): Promise<number> =>
+  withUtils((utils) => utils.withPgClient((client) => dropSuperseded(client)));
 
 /** Lets a failed job be tried at once, with all its attempts before it. False: it is not there, or runs now. */
 export async function retryJob(id: string): Promise<boolean> {

@@ -13,14 +13,30 @@ export interface QueuedJob {
   error: string | null;
 }
 
+/**
+ * A job that ran when the next of its key was asked for: the library takes its key and its tries away, so that failed
+ * then it is never done again. The one after it does what it left. Every job of ours has a key.
+ */
+const SUPERSEDED = 'key is null and attempts >= max_attempts and locked_at is null';
+
+/** What waits, runs or failed; without those in whose place another has come. */
 export async function queuedJobs(client: pg.ClientBase, limit: number): Promise<QueuedJob[]> {
   const { rows } = await client.query<QueuedJob>(
     `select id::text, task_identifier as task, key, attempts, max_attempts as "attemptsMax", run_at as "runAt",
             locked_at as "lockedAt", last_error as error
-     from graphile_worker.jobs order by last_error is null, run_at limit $1`,
+     from graphile_worker.jobs where not (${SUPERSEDED}) order by last_error is null, run_at limit $1`,
     [limit],
   );
   return rows;
+}
+
+/** Takes away failed jobs in whose place another has come. @returns how many */
+export async function dropSuperseded(client: pg.ClientBase): Promise<number> {
+  const { rows } = await client.query<{ n: number }>(
+    `select count(*)::int as n
+     from graphile_worker.complete_jobs(array(select id from graphile_worker.jobs where ${SUPERSEDED}))`,
+  );
+  return rows[0]?.n ?? 0;
 }
 
 /** Whether a worker has ever made its queue in this database. */
