@@ -16,6 +16,13 @@ export const INGEST_LOGGERS_HISTORY: readonly Route[] = [
   },
   get('api/v1/ingest/roster.ts', 'public', 'nothing', () => '/api/v1/ingest/roster', [401]),
   get('sites/[site]/loggers.astro', 'logger.read', 'site', (t) => `/sites/${t.site}/loggers`),
+  get('api/sites/[site]/loggers.csv.ts', 'logger.read', 'site', (t) => `/api/sites/${t.site}/loggers.csv`),
+  get(
+    'api/sites/[site]/history-imports.csv.ts',
+    'history.import',
+    'site',
+    (t) => `/api/sites/${t.site}/history-imports.csv`,
+  ),
   get('api/sites/[site]/loggers/index.ts', 'logger.read', 'site', (t) => `/api/sites/${t.site}/loggers`),
   {
     file: 'api/sites/[site]/loggers/[logger]/tokens/index.ts',

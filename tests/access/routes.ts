@@ -100,6 +100,7 @@ export const ROUTES: readonly Route[] = [
   get('api/shutdown.csv.ts', 'shutdown.read', 'nothing', () => '/api/shutdown.csv'),
   get('api/sites/[site]/index.ts', 'site.read', 'site', (t) => `/api/sites/${t.site}`),
   get('api/sites/[site]/events.ts', 'site.read', 'site', (t) => `/api/sites/${t.site}/events`),
+  get('api/sites/[site]/events.csv.ts', 'site.read', 'site', (t) => `/api/sites/${t.site}/events.csv`),
   {
     file: 'api/sites/[site]/acknowledge.ts',
     method: 'POST',

@@ -1,12 +1,13 @@
 import { useInfiniteQuery } from '@tanstack/react-query';
 import { useState } from 'react';
-import { Button } from '../../components/ui/Button';
+import { Button, ButtonLink } from '../../components/ui/Button';
 import { Choice } from '../../components/ui/Choice';
 import { NotRead } from '../../components/ui/NotRead';
 import { Notice } from '../../components/ui/Notice';
 import { Sheet } from '../../components/ui/Sheet';
 import { SiteTime } from '../../components/ui/Time';
 import { eventWords, KINDS } from '../../domain/verdicts/event-words';
+import { withQuery } from '../../lib/api';
 import { queryClient } from '../../lib/query-client';
 import type { EventItem } from '../../schemas/api/now';
 import type { EventsPage } from '../../schemas/api/site';
@@ -75,14 +76,18 @@ export function EventsSheet({ site, initial, now, timeZone, zone, kind, onKind }
       id="events"
       title={eventsSheet.events}
       aside={
-        <Choice
-          inline
-          className="no-print"
-          label={eventsSheet.kind}
-          value={kind}
-          options={[{ value: 'all', label: eventsSheet.all }, ...KINDS]}
-          onChange={(wanted) => onKind(wanted as KindWanted)}
-        />
+        <span className="no-print flex flex-wrap items-center gap-2">
+          <Choice
+            inline
+            label={eventsSheet.kind}
+            value={kind}
+            options={[{ value: 'all', label: eventsSheet.all }, ...KINDS]}
+            onChange={(wanted) => onKind(wanted as KindWanted)}
+          />
+          <ButtonLink href={withQuery(paths.api.siteEventsCsv(site), { kind })} download>
+            CSV
+          </ButtonLink>
+        </span>
       }
     >
       <NotRead error={error} title={eventsSheet.eventsCouldNotBe} kind="failed" onRetry={() => refetch()} />
