@@ -1,18 +1,25 @@
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import type { SeededSite } from '../../seeds/plant/seeded';
-import { asIngest } from '../../src/server/db/transaction';
+import type { Actor } from '../../src/domain/access/permissions';
+import { asActor, asIngest } from '../../src/server/db/transaction';
 import { dueDay } from '../../src/server/jobs/nights-due';
 import { judgeNight } from '../../src/server/jobs/output-night';
 import { readNightSeries } from '../../src/server/jobs/plane-series';
+import { staysOf } from '../../src/server/queries/as-built-history';
 import { outputDaysOf } from '../../src/server/queries/output-days';
 import { seriesSite } from '../../src/server/queries/output-site';
+import { readLowOutput } from '../../src/server/services/low-output';
+import { readExplanations } from '../../src/server/services/string-explanations';
+import { readHistory } from '../../src/server/services/string-history';
+import { readString } from '../../src/server/services/string-page';
 import { testDatabase, type TestDatabase } from '../support/database';
-import { testFleet } from '../support/fleet';
+import { testFleet, type TestFleet } from '../support/fleet';
 
 /** Nights at their edges: one string on its plane, the day of 25 hours, a unit replaced yesterday, a month without data. */
 const SITE = 'Weirside Clinic';
 const LAST = '2026-10-25'; // clocks go back in Europe: 25 hours
 let db: TestDatabase;
+let fleet: TestFleet;
 let site: SeededSite;
 let lonely: { id: number; ref: string; slots: number; name: string };
 
@@ -21,7 +28,7 @@ const dayOf = (back: number): string =>
 
 beforeAll(async () => {
   db = await testDatabase();
-  const fleet = await testFleet(db, [SITE], Date.parse('2026-06-01T00:00Z') / 1000);
+  fleet = await testFleet(db, [SITE], Date.parse('2026-06-01T00:00Z') / 1000);
   site = fleet.site(SITE);
   await db.owner.query(
     `update site set stage = 'operating', time_zone = 'Europe/Berlin', latitude = 48, longitude = 11, report_interval_s = 60`,
@@ -113,6 +120,25 @@ describe('a night at its edges', () => {
     expect(rows).toMatchObject([{ kind: 'low_output' }]);
     expect(rows[0]?.evidence).toContain('its own model');
     expect(rows[0]?.since).toEqual(new Date('2026-10-21T22:00Z'));
+  });
+
+  it('the pages say the same: held against the model, the day of 25 hours whole, the unit of yesterday', async () => {
+    const at = new Date('2026-10-25T18:00Z');
+    const actor: Actor = { ...(await fleet.actor('analyst@lowfield.example')), sites: 'all' };
+    const [listed] = (await asActor(actor, (tx) => readLowOutput(tx, at))).rows;
+    expect(listed).toMatchObject({ string: { name: lonely.name }, method: 'model', since: '2026-10-22' });
+    const explained = await asActor(actor, (tx) => readExplanations(tx, lonely.ref, { on: LAST }, at));
+    expect(explained).toMatchObject({ day: LAST, outcome: 'low', method: 'model', weak: [] });
+    const day = await asActor(actor, (tx) =>
+      readHistory(tx, lonely.ref, { range: 'day', quantity: 'voltage', on: LAST }, at),
+    );
+    expect([day.to - day.from, day.resolution]).toEqual([25 * 3600, 'quarter']);
+    expect(day.values.filter((v) => v !== null)).toHaveLength(40);
+    const page = await asActor(actor, (tx) => readString(tx, lonely.ref, at));
+    expect(page.string.slots[0]).toMatchObject({ position: 1, serial: 'NEWUNIT1' });
+    // what the unit before it did is its own
+    const stays = await asActor(actor, (tx) => staysOf(tx, actor.organisationId, 'NEWUNIT1'));
+    expect(stays).toMatchObject([{ position: 1, from: '2026-10-24T12:00:00.000Z', to: null }]);
   });
 
   it('strings without a month of data are not told, and say why', async () => {
