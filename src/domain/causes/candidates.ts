@@ -61,6 +61,10 @@ const grouped = (items: readonly Item[], keys: (item: Item) => readonly string[]
   return groups;
 };
 
+/** Groups of which half or more say something: of a zone in the dark two that are seen are not all of it. */
+const mostlyTold = (groups: Map<string, Item[]>): Map<string, Item[]> =>
+  new Map([...groups].filter(([, of]) => 2 * of.filter((i) => i.shows !== 'unknown').length >= of.length));
+
 /** Every part that could stand behind `verdict` at this site, with the units that hang from it. */
 export function candidatesFor(
   verdict: CauseVerdict,
@@ -116,15 +120,17 @@ export function candidatesFor(
     add('zone', 'zone', byZone, 8.5, ALL);
     add('inverter', 'inverter', byInverter, 11, ALL);
   } else if (verdict === 'not_shutting_down') {
-    add('string', 'string', byString, 10, ALL);
-    add('transmitter_on', 'transmitter', byTransmitter, 8, ALL);
+    add('string', 'string', mostlyTold(byString), 10, ALL);
+    add('transmitter_on', 'transmitter', mostlyTold(byTransmitter), 8, ALL);
     const sendsStill = site.transmitters.filter(
       (t) => t.inForce === 'released' && zoneReleased(site, t.zone),
     );
     for (const neighbour of sendsStill)
-      for (const [, members] of grouped(
-        keepAlive.filter((i) => !i.string.transmitters.includes(neighbour.name)),
-        (i) => [i.string.name],
+      for (const [, members] of mostlyTold(
+        grouped(
+          keepAlive.filter((i) => !i.string.transmitters.includes(neighbour.name)),
+          (i) => [i.string.name],
+        ),
       ))
         if (members.some((m) => m.shows === 'abnormal'))
           found.push({
@@ -134,9 +140,9 @@ export function candidatesFor(
             rarity: 6.5 + Math.log(sendsStill.length),
             ...ALL,
           });
-    add('gateway', 'gateway', byGateway, 9.5, ALL);
-    add('zone', 'zone', byZone, 8.5, ALL);
-    add('logger', 'logger', byLogger, 10, ALL);
+    add('gateway', 'gateway', mostlyTold(byGateway), 9.5, ALL);
+    add('zone', 'zone', mostlyTold(byZone), 8.5, ALL);
+    add('logger', 'logger', mostlyTold(byLogger), 10, ALL);
     add(
       'input',
       'input',

@@ -142,6 +142,17 @@ describe('units that do not shut down', () => {
     );
     expect(cause).toMatchObject({ sharedPart: { kind: 'transmitter', name: 'T1' } });
   });
+  it('two of them stay two when the others have gone dark: they are not all of what they share', () => {
+    const dusk = withUnits(stringOf('A1', 14), 'all', 'dark', 'unconfirmed');
+    const two = withUnits(dusk, [3, 11], 'passing', 'not_shutting_down');
+    const other = withUnits(stringOf('A2', 14), 'all', 'dark', 'unconfirmed');
+    const found = causesOf(
+      siteOf([two, other], { zones: [{ name: 'Z1', inForce: 'initiator' }], transmitters: [] }),
+    ).filter((c) => c.verdict === 'not_shutting_down');
+    expect(found.map((c) => c.sharedPart?.kind)).toEqual(['unit', 'unit']);
+    expect(found.flatMap((c) => c.units.map((u) => u.position)).sort()).toEqual([11, 3]);
+  });
+
   it('the gravest comes first', () => {
     const verdicts = causesOf(
       siteOf(
