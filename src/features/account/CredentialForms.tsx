@@ -1,4 +1,4 @@
-import { useState } from 'react';
+import { useState, type ReactNode } from 'react';
 import { Button } from '../../components/ui/Button';
 import { Field } from '../../components/ui/Field';
 import { Notice } from '../../components/ui/Notice';
@@ -7,19 +7,40 @@ import { paths } from '../../schemas/paths';
 import { useSending } from './send';
 import { credentialForms } from '../../words/account';
 
-/** What was wrong with the whole, where no field carries it. */
-function Whole({
+/** A form about what lets people in: what came of it, what was wrong with the whole where no field carries it, its fields. */
+export function CredentialForm({
   fault,
   fields,
+  done = null,
+  onSend,
+  children,
+  action,
 }: {
   fault: ReturnType<typeof useSending>['fault'];
   fields: readonly string[];
+  done?: ReactNode;
+  onSend: () => Promise<void>;
+  children: ReactNode;
+  action: ReactNode;
 }) {
-  if (!fault || fields.some((f) => fault.fault(f))) return null;
   return (
-    <p role="alert" className="font-medium text-rust-ink">
-      {fault.message}
-    </p>
+    <form
+      className="grid gap-4"
+      noValidate
+      onSubmit={(event) => {
+        event.preventDefault();
+        void onSend();
+      }}
+    >
+      {!fault && done}
+      {fault && !fields.some((f) => fault.fault(f)) && (
+        <p role="alert" className="font-medium text-rust-ink">
+          {fault.message}
+        </p>
+      )}
+      {children}
+      <div>{action}</div>
+    </form>
   );
 }
 
@@ -38,17 +59,18 @@ export function PasswordForm({ email, onChanged }: { email: string; onChanged: (
     onChanged();
   };
   return (
-    <form
-      className="grid gap-4"
-      noValidate
-      onSubmit={(event) => {
-        event.preventDefault();
-        void change();
-      }}
+    <CredentialForm
+      fault={fault}
+      fields={['current', 'password']}
+      done={done && <Notice kind="done" title={credentialForms.passwordChanged} />}
+      onSend={change}
+      action={
+        <Button type="submit" weight="primary" disabled={busy}>
+          {credentialForms.changeThePassword}
+        </Button>
+      }
     >
       <input type="hidden" autoComplete="username" value={email} />
-      {done && !fault && <Notice kind="done" title={credentialForms.passwordChanged} />}
-      <Whole fault={fault} fields={['current', 'password']} />
       <Field
         label={credentialForms.currentPassword}
         type="password"
@@ -66,12 +88,7 @@ export function PasswordForm({ email, onChanged }: { email: string; onChanged: (
         error={fault?.fault('password')}
         onChange={(event) => setPassword(event.target.value)}
       />
-      <div>
-        <Button type="submit" weight="primary" disabled={busy}>
-          {credentialForms.changeThePassword}
-        </Button>
-      </div>
-    </form>
+    </CredentialForm>
   );
 }
 
@@ -91,20 +108,23 @@ export function EmailForm({ email }: { email: string }) {
     setSentTo(wanted);
   };
   return (
-    <form
-      className="grid gap-4"
-      noValidate
-      onSubmit={(event) => {
-        event.preventDefault();
-        void ask();
-      }}
+    <CredentialForm
+      fault={fault}
+      fields={['current', 'email']}
+      done={
+        sentTo && (
+          <Notice kind="done" title={credentialForms.letterSent(sentTo)}>
+            {credentialForms.addressChangesWhen(email)}
+          </Notice>
+        )
+      }
+      onSend={ask}
+      action={
+        <Button type="submit" disabled={busy}>
+          {credentialForms.sendTheLetter}
+        </Button>
+      }
     >
-      {sentTo && !fault && (
-        <Notice kind="done" title={credentialForms.letterSent(sentTo)}>
-          {credentialForms.addressChangesWhen(email)}
-        </Notice>
-      )}
-      <Whole fault={fault} fields={['current', 'email']} />
       <Field
         label={credentialForms.newAddress}
         type="email"
@@ -121,11 +141,6 @@ export function EmailForm({ email }: { email: string }) {
         error={fault?.fault('current')}
         onChange={(event) => setCurrent(event.target.value)}
       />
-      <div>
-        <Button type="submit" disabled={busy}>
-          {credentialForms.sendTheLetter}
-        </Button>
-      </div>
-    </form>
+    </CredentialForm>
   );
 }

@@ -5,6 +5,7 @@ import { Field } from '../../components/ui/Field';
 import { SCOPE_WORDS, TOKEN_DAYS, TOKEN_SCOPES, type TokenScope } from '../../domain/access/scopes';
 import { paths } from '../../schemas/paths';
 import type { MadeToken, TokensPage } from '../../schemas/api/tokens';
+import { CredentialForm } from './CredentialForms';
 import { useSending } from './send';
 import { tokenForm } from '../../words/account';
 
@@ -38,19 +39,16 @@ export function TokenForm({
     if (reply.taken) onMade(reply.answer);
   };
   return (
-    <form
-      className="grid gap-4"
-      noValidate
-      onSubmit={(event) => {
-        event.preventDefault();
-        void make();
-      }}
+    <CredentialForm
+      fault={fault}
+      fields={FIELDS}
+      onSend={make}
+      action={
+        <Button type="submit" weight="primary" disabled={busy}>
+          {tokenForm.makeTheToken}
+        </Button>
+      }
     >
-      {fault && !FIELDS.some((f) => fault.fault(f)) && (
-        <p role="alert" className="font-medium text-rust-ink">
-          {fault.message}
-        </p>
-      )}
       <Field
         label={tokenForm.name}
         hint={tokenForm.whatWillUseIt}
@@ -98,12 +96,7 @@ export function TokenForm({
         error={faultOf('current')}
         onChange={(event) => change({ current: event.target.value })}
       />
-      <div>
-        <Button type="submit" weight="primary" disabled={busy}>
-          {tokenForm.makeTheToken}
-        </Button>
-      </div>
-    </form>
+    </CredentialForm>
   );
 }
 
