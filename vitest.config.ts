@@ -2,6 +2,7 @@ import { defineConfig } from 'vitest/config';
 import Order from './tests/setup/order';
 
 const noise = 'tests/setup/console.ts';
+const alone = 'tests/setup/alone.ts';
 const database = 'tests/setup/database.ts';
 const build = 'tests/setup/build.ts';
 
@@ -42,7 +43,9 @@ export default defineConfig({
         test: {
           name: 'integration',
           include: ['tests/integration/**/*.test.ts'],
-          setupFiles: [noise],
+          isolate: false, // the product is read anew for each file, packages once
+          sequence: { setupFiles: 'list' },
+          setupFiles: [alone, noise],
           globalSetup: [database],
         },
       },
@@ -51,7 +54,9 @@ export default defineConfig({
         test: {
           name: 'migrations',
           include: ['tests/migrations/**/*.test.ts'],
-          setupFiles: [noise],
+          isolate: false,
+          sequence: { setupFiles: 'list' },
+          setupFiles: [alone, noise],
           globalSetup: [database],
         },
       },

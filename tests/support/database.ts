@@ -1,3 +1,4 @@
+import { randomBytes } from 'node:crypto';
 import pg from 'pg';
 import { inject } from 'vitest';
 import { closePools } from '../../src/server/db/pools';
@@ -18,15 +19,13 @@ export interface TestDatabase {
   drop(): Promise<void>;
 }
 
-let made = 0;
-
 /**
  * A database of its own for a test file: a copy of the migrated, empty template. The environment of this process
  * then names it, so that the server's own `database()` works on it. Drop it in `afterAll`.
  */
 export async function testDatabase(): Promise<TestDatabase> {
   const server = inject('testServer');
-  const name = `${server.template.replace(/_template$/, '')}_${process.pid}_${process.env.VITEST_POOL_ID ?? 0}_${made++}`;
+  const name = `${server.template.replace(/_template$/, '')}_${process.pid}_${randomBytes(5).toString('hex')}`;
   const at = (url: string): string => {
     const address = new URL(url);
     address.pathname = `/${name}`;
