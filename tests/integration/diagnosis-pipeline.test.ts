@@ -48,8 +48,6 @@ type LabelledFault = OutputFault | Extract<Fault, { kind: 'string_isolated' }>;
 /** Twelve strings under one sky, with one of each fault of the output from the first day on. */
 function labelled(): { run: OutputRun; faults: Map<string, LabelledFault> } {
   const drawn = outputRun(RUN);
-  // home runs of one length: a long one among short ones looks like a bad connector, which is the bench's question
-  for (const s of drawn.drawn.plan.strings) s.cableResistance = 0.36;
   const name = (k: number): string => drawn.drawn.plan.strings[k]!.name;
   const each: LabelledFault[] = [
     { kind: 'soiling', string: name(0), share: 0.18 },

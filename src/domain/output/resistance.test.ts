@@ -42,18 +42,25 @@ const fitted = (samples: LoopSample[]): LoopFit => {
   if (typeof fit === 'string') throw new Error(fit);
   return fit;
 };
-const alone = { past: null, siblingsOhm: [], cableOhm: 0.4 };
+const alone = { past: null, siblings: [], cableOhm: 0.4 };
 
 describe('the loop of a string', () => {
+  it('does not take a longer home run for a fault', () => {
+    const fit = fitLoop(days(generator(6), 3, 0.9));
+    const siblings = [0.41, 0.38, 0.43, 0.4].map((ohm) => ({ ohm, cableOhm: 0.4 }));
+    expect(judgeLoop(fit, { past: null, siblings, cableOhm: 0.9 }).outcome).toBe('usual');
+    expect(judgeLoop(fit, { past: null, siblings, cableOhm: 0.4 }).outcome).toBe('excess');
+  });
+
   it('finds 0.2 Ω added within three days, and leaves sound strings alone', () => {
     const random = generator(6);
     let found = 0;
     let falsely = 0;
     const N = 16;
     for (let k = 0; k < N; k++) {
-      const siblingsOhm = [0.41, 0.38, 0.43, 0.4, 0.37, 0.42];
-      const bad = judgeLoop(fitLoop(days(random, 3, 0.6)), { ...alone, siblingsOhm });
-      const good = judgeLoop(fitLoop(days(random, 3, 0.4)), { ...alone, siblingsOhm });
+      const siblings = [0.41, 0.38, 0.43, 0.4, 0.37, 0.42].map((ohm) => ({ ohm, cableOhm: 0.4 }));
+      const bad = judgeLoop(fitLoop(days(random, 3, 0.6)), { ...alone, siblings });
+      const good = judgeLoop(fitLoop(days(random, 3, 0.4)), { ...alone, siblings });
       if (bad.outcome === 'excess') found++;
       if (good.outcome === 'excess') falsely++;
     }
@@ -96,7 +103,7 @@ describe('the loop of a string', () => {
   it('takes what all strings show alike for the weather', () => {
     const fit = { ohm: 0.6, low: 0.55, high: 0.65, sharedOhm: null, gain: 0, samples: 90, highestA: 9 };
     const past = { ...fit, ohm: 0.4, low: 0.35, high: 0.45 };
-    const against = { past, siblingsOhm: [], cableOhm: 0.4 };
+    const against = { past, siblings: [], cableOhm: 0.4 };
     expect(judgeLoop(fit, against).outcome).toBe('growing');
     const all = [0.18, 0.2, 0.21, 0.19, 0.22];
     expect(judgeLoop(fit, { ...against, siblingsGrowthOhm: all }).outcome).toBe('usual');
@@ -105,7 +112,7 @@ describe('the loop of a string', () => {
   it("says that it can't tell rather than that nothing is wrong", () => {
     const fit = { ohm: 0.55, low: 0.4, high: 0.7, sharedOhm: null, gain: 0, samples: 40, highestA: 9 };
     const past = { ...fit, ohm: 0.45, low: 0.35, high: 0.55 };
-    expect(judgeLoop(fit, { past, siblingsOhm: [], cableOhm: 0.4 })).toMatchObject({ outcome: 'cant_tell' });
+    expect(judgeLoop(fit, { past, siblings: [], cableOhm: 0.4 })).toMatchObject({ outcome: 'cant_tell' });
   });
 
   it('keeps what strings share apart from its own where their currents differ', () => {

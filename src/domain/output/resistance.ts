@@ -266,8 +266,8 @@ export function fitLoop(samples: readonly LoopSample[]): LoopFit | string {
 export interface LoopComparison {
   /** Fit of an earlier time with everything in order: growth is measured against it. */
   past: LoopFit | null;
-  /** Own resistances of like strings. */
-  siblingsOhm: readonly number[];
+  /** Own resistances of like strings, and what their cables and sound connectors should have, ohm. */
+  siblings: readonly { ohm: number; cableOhm: number }[];
   /** By how much those of like strings have grown since the same time: what all show alike is the weather's. */
   siblingsGrowthOhm?: readonly number[];
   /** What its cables and sound connectors should have, ohm. */
@@ -310,12 +310,14 @@ export function judgeLoop(
     };
   const half = (fit.high - fit.low) / 2;
   const byPast = against.past !== null;
-  const bySiblings = !byPast && against.siblingsOhm.length >= SIBLINGS_MIN;
-  const reference = byPast ? against.past!.ohm : bySiblings ? median(against.siblingsOhm) : against.cableOhm;
+  // a longer home run is no fault: the others are taken as if they had the cables of this one
+  const siblingsOhm = against.siblings.map((s) => s.ohm - s.cableOhm + against.cableOhm);
+  const bySiblings = !byPast && siblingsOhm.length >= SIBLINGS_MIN;
+  const reference = byPast ? against.past!.ohm : bySiblings ? median(siblingsOhm) : against.cableOhm;
   const referenceHalf = byPast
     ? (against.past!.high - against.past!.low) / 2
     : bySiblings
-      ? 1.96 * sigmaMad(against.siblingsOhm)
+      ? 1.96 * sigmaMad(siblingsOhm)
       : 0.3 * against.cableOhm;
   const limit = byPast || bySiblings ? excessOhm : 2 * excessOhm;
   const wide = Math.hypot(half, referenceHalf);

@@ -130,7 +130,7 @@ export const resistanceExample: Example = {
     const past = fitLoop(samples(n('past')));
     const finding = judgeLoop(fitLoop(samples(n('now'))), {
       past: typeof past === 'string' ? null : past,
-      siblingsOhm: [],
+      siblings: [],
       cableOhm: n('past'),
     });
     return {

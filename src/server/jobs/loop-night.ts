@@ -60,15 +60,15 @@ export async function fitLoops(
     const fit = fits.get(string.id) ?? 'no samples';
     const past = pasts.get(string.id) ?? null;
     const like = loops.filter((o) => o.string.id !== string.id && o.string.unitTypeId === string.unitTypeId);
-    const known = like.flatMap((o): [LoopFit, number][] => {
+    const known = like.flatMap((o): [LoopFit, OutputString][] => {
       const f = fits.get(o.string.id);
-      return f === undefined || typeof f === 'string' ? [] : [[f, o.string.id]];
+      return f === undefined || typeof f === 'string' ? [] : [[f, o.string]];
     });
     const against: LoopComparison = {
       past,
-      siblingsOhm: known.map(([f]) => f.ohm),
-      siblingsGrowthOhm: known.flatMap(([f, id]) => {
-        const before = pasts.get(id);
+      siblings: known.map(([f, s]) => ({ ohm: f.ohm, cableOhm: conductorsOhm(s.cableOhm, s.slots) })),
+      siblingsGrowthOhm: known.flatMap(([f, s]) => {
+        const before = pasts.get(s.id);
         return before ? [f.ohm - before.ohm] : [];
       }),
       cableOhm: conductorsOhm(string.cableOhm, string.slots),

@@ -174,12 +174,17 @@ export async function unitSteps(
 }
 
 /** The newest fitted resistance of each string up to a day (yyyy-mm-dd), within a month of it; ohm. */
-export async function newestLoopFits(tx: Tx, stringIds: readonly number[], day: string): Promise<number[]> {
-  const { rows } = await tx.raw<{ rows: { ohm: number }[] }>(
-    `select distinct on (string_id) ohm::float8 as ohm from loop_fit
+export async function newestLoopFits(
+  tx: Tx,
+  stringIds: readonly number[],
+  day: string,
+): Promise<{ ohm: number; cableOhm: number; slots: number }[]> {
+  const { rows } = await tx.raw<{ rows: { ohm: number; cableOhm: number; slots: number }[] }>(
+    `select distinct on (string_id) ohm::float8 as ohm, s.cable_resistance::float8 as "cableOhm", s.slots::int as slots
+     from loop_fit join string s on s.id = string_id
      where string_id = any (:ids::int4[]) and day <= :day::date and day > :day::date - 31
      order by string_id, day desc`,
     { ids: [...stringIds], day },
   );
-  return rows.map((r) => r.ohm);
+  return rows;
 }

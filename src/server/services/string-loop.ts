@@ -49,11 +49,13 @@ export async function loopOf(
   const past = (await pastFits(tx, facts.siteId, fromDay)).find((p) => p.stringId === facts.id)?.fit ?? null;
   const finding = judgeLoop(fit, {
     past,
-    siblingsOhm: await newestLoopFits(
-      tx,
-      siblings.map((s) => s.id),
-      day,
-    ),
+    siblings: (
+      await newestLoopFits(
+        tx,
+        siblings.map((s) => s.id),
+        day,
+      )
+    ).map((f) => ({ ohm: f.ohm, cableOhm: conductorsOhm(f.cableOhm, f.slots) })),
     cableOhm: conductorsOhm(facts.cableOhm, facts.slots),
   });
   return { samples, fit, finding, fromDay, day, strings: onInput.length };

@@ -136,16 +136,20 @@ function fitAndScore(
     run.onsetDay < 2 ? 'no past' : fitLoop(samplesOf(run, reports, k, 0, run.onsetDay - 1, every)),
   );
   const fits = plan.strings.map((_, k) => fitLoop(samplesOf(run, reports, k, from, last, every)));
+  const cableOhm = (k: number): number =>
+    plan.strings[k]!.cableResistance + 0.002 * (plan.strings[k]!.slots.length + 1);
   plan.strings.forEach((s, k) => {
     const past = pasts[k]!;
     const finding = judgeLoop(fits[k]!, {
       past: typeof past === 'string' ? null : past,
-      siblingsOhm: fits.flatMap((f, j) => (j === k || typeof f === 'string' ? [] : [f.ohm])),
+      siblings: fits.flatMap((f, j) =>
+        j === k || typeof f === 'string' ? [] : [{ ohm: f.ohm, cableOhm: cableOhm(j) }],
+      ),
       siblingsGrowthOhm: fits.flatMap((f, j) => {
         const before = pasts[j]!;
         return j === k || typeof f === 'string' || typeof before === 'string' ? [] : [f.ohm - before.ohm];
       }),
-      cableOhm: s.cableResistance + 0.002 * (s.slots.length + 1),
+      cableOhm: cableOhm(k),
     });
     const bad = run.ofString.get(s.name)?.kind === 'connector';
     const said = finding.outcome === 'excess' || finding.outcome === 'growing';
