@@ -42,7 +42,7 @@ export async function testDatabase(): Promise<TestDatabase> {
       await client.end();
     }
   };
-  await admin(`create database "${name}" template "${server.template}"`);
+  await admin(`create database "${name}" template "${server.template}" strategy file_copy`);
   const urls = { url: at(server.templateUrl), appUrl: at(server.appUrl), ingestUrl: at(server.ingestUrl) };
   const env = {
     DATABASE_URL: urls.url,

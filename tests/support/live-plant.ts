@@ -1,7 +1,7 @@
 import { randomUUID } from 'node:crypto';
 import type pg from 'pg';
 import type { SeededSite } from '../../seeds/plant/seeded';
-import { frameOf, inputRows, radioOf } from '../../simulator/logger/readings';
+import { frameOf, inputRows, inverterRows, radioOf } from '../../simulator/logger/readings';
 import type { SitePlant } from '../../simulator/plant/site-plant';
 import type { Actor } from '../../src/domain/access/permissions';
 import { caseKindOf } from '../../src/domain/cases/cases';
@@ -11,7 +11,7 @@ import { SiteJudge } from '../../src/server/ingest/judge-site';
 import { JudgeWriter } from '../../src/server/ingest/judge-writer';
 import { judgeSiteCauses } from '../../src/server/jobs/judge-causes';
 import { writeFrames } from '../../src/server/queries/ingest-frames';
-import { learnGateways, writeInputs } from '../../src/server/queries/ingest-reports';
+import { learnGateways, writeInputs, writeInverters } from '../../src/server/queries/ingest-reports';
 import { judgedSite } from '../../src/server/queries/judgement-contexts';
 import { casePage } from '../../src/server/services/cases';
 import { changeCase } from '../../src/server/services/change-case';
@@ -200,6 +200,11 @@ export class LivePlant {
     await this.command(zone, isOpen ? 'initiator' : 'released');
   }
 
+  /** What the air at the site is said to be, °C: snow may lie where it freezes. */
+  air(temperatureAir: number): void {
+    this.judge.takeAir(temperatureAir, this.date().getTime() / 1000);
+  }
+
   /** The plant goes on until `hours` after the noon of its first day, and nobody reports meanwhile. */
   sleepUntil(hours: number): void {
     const untilS = this.noonS + hours * 3600;
@@ -237,6 +242,15 @@ export class LivePlant {
           at,
           voltage: r.voltage,
           current: r.current,
+        })),
+      );
+      await writeInverters(
+        client,
+        inverterRows(this.plant, logger).map(({ inverter, ...r }) => ({
+          ...r,
+          inverterId: site.inverters.get(inverter)!,
+          siteId: site.id,
+          at,
         })),
       );
     }
