@@ -132,8 +132,7 @@ export const testSignRefusals = {
 export const testWriteRefusals = {
   test: 'shutdown test',
   signedStays: 'This test is signed and stays as it is. Start a new one that supersedes it.',
-  ended: (person: string, reason: string) =>
-    `This test was ended by ${person}: ${reason}. Start a new one.`,
+  ended: (person: string, reason: string) => `This test was ended by ${person}: ${reason}. Start a new one.`,
   entryAhead: (entry: number) =>
     `The time of entry ${entry} lies in the future: set the phone's clock, then try again.`,
   inTheFuture: 'lies in the future',

@@ -45,7 +45,7 @@ export interface Batch {
   gateways: { siteId: number; loggerId: number; number: number; heardAt: number }[];
 }
 
-export const FRAMES_A_BATCH = 500;
+export const FRAMES_A_BATCH = 1500;
 export const ROWS_A_BATCH = 5000;
 
 const complete = (row: FrameRow): boolean => !row.state.includes(null);

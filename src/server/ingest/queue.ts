@@ -6,7 +6,7 @@ import type { Written } from './write-batch';
 /** Readings that may wait before sockets are paused, and how far they must fall before sockets go on. */
 export const PAUSE_ABOVE = 60_000;
 export const RESUME_BELOW = 30_000;
-const LANES = 2;
+const LANES = 3;
 
 export interface QueueHooks {
   written: (batch: Batch, written: Written) => Promise<void> | void;
