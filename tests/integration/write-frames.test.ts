@@ -60,7 +60,7 @@ function rowOf({ string, minute, slots, value, output }: Came): FrameRow {
     voltageIn: output ? null : values,
     current: values.map((v) => (v === null ? null : Math.abs(v))),
     power: output ? values : null,
-    temperature: slots.map((heard, i) => (heard && i !== 2 ? value % 900 : null)),
+    temperature: slots.map((heard, i) => (heard && i !== 2 ? Math.abs(value) % 900 : null)),
     signal: slots.map((heard) => (heard ? -60 : null)),
     via: slots.map((heard, i) => (heard ? i : null)),
     state: slots.map((heard) => (heard ? 1 : null)),
