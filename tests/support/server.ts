@@ -21,9 +21,21 @@ export interface RunningSite {
   kill(): Promise<void>;
 }
 
+/** A port that was free may be somebody's connection a moment later: another one is tried then. */
+const TRIES = 4;
+
 /** The built site as a process of its own, on a test's database. Stop it before the database is dropped. */
 export async function startSite(db: TestDatabase, env: Record<string, string> = {}): Promise<RunningSite> {
-  const port = Number(env.PORT ?? (await freePort(0)));
+  for (let tries = 1; ; tries++)
+    try {
+      return await startAt(Number(env.PORT ?? (await freePort(0))), db, env);
+    } catch (error) {
+      const taken = error instanceof Error && error.message.includes('EADDRINUSE');
+      if (!taken || env.PORT !== undefined || tries === TRIES) throw error;
+    }
+}
+
+async function startAt(port: number, db: TestDatabase, env: Record<string, string>): Promise<RunningSite> {
   const child = fork(SERVE, [], {
     env: {
       ...process.env,
