@@ -39,16 +39,17 @@ export async function hydrated(page: Page): Promise<void> {
   for (;;)
     try {
       await page.evaluate(async (untilMs) => {
-        const waiting = (): Element[] =>
-          [...document.querySelectorAll('astro-island[client="load"]')].filter((island) => {
+        // no function in here has a name: what runs benches would want a helper for it that pages do not have
+        for (;;) {
+          const waiting = [...document.querySelectorAll('astro-island[client="load"]')].filter((island) => {
             if (island.hasAttribute('ssr')) return true;
             // the attribute goes when hydration begins; elements that React has taken over carry its mark
             const first = island.querySelector(':scope > :not(template, script, style, link)');
             return first && !Object.keys(first).some((key) => key.startsWith('__reactProps'));
           });
-        while (waiting().length > 0) {
+          if (waiting.length === 0) return;
           if (Date.now() > untilMs)
-            throw new Error(`never alive: ${waiting().map((i) => i.getAttribute('component-url'))}`);
+            throw new Error(`never alive: ${waiting.map((i) => i.getAttribute('component-url'))}`);
           await new Promise((resolve) => setTimeout(resolve, 20));
         }
       }, until);
