@@ -2,7 +2,7 @@ import fs from 'node:fs';
 import path from 'node:path';
 import { describe, expect, it } from 'vitest';
 import { importsOf, isTest, ROOT, sources, type Source } from './sources';
-import { FEATURES, packageOf, rowOf, SERVER_PACKAGES, TABLE, type Row } from './table';
+import { FEATURES, names, packageOf, rowOf, SERVER_PACKAGES, TABLE, type Row } from './table';
 
 const all = sources();
 const product = all.filter(({ file }) => !isTest(file));
@@ -23,7 +23,11 @@ function fault(
       return MADE.test(to.file) && /^(src\/server|tests)\//.test(file)
         ? undefined
         : `${file} imports ${to.file}, which is in no folder of the table`;
-    if (target.folder === row.folder || row.may.includes(target.folder) || row.may.some((m) => to.file === m))
+    if (
+      target.folder === row.folder ||
+      row.may.includes(target.folder) ||
+      row.may.some((m) => names(m, to.file ?? ''))
+    )
       return undefined;
     return `${file} (${row.folder}) may not import ${to.file} (${target.folder})`;
   }
@@ -72,6 +76,27 @@ describe('imports', () => {
     expect([...cycles]).toEqual([]);
   });
 
+  it('of what the domain says bring nothing of the domain but types, and no other words', () => {
+    const mayRun = [
+      'src/words/domain-*',
+      'src/words/language.ts',
+      'src/drawings/numbers.ts',
+      'src/drawings/times.ts',
+    ];
+    const said = product.filter(({ file }) => names('src/words/domain-*', file));
+    expect(said.length).toBeGreaterThan(0);
+    expect(
+      said.flatMap(({ file, imports }) =>
+        imports
+          .filter(
+            ({ file: to = '', typeOnly }) =>
+              !mayRun.some((entry) => names(entry, to)) && !(typeOnly && to.startsWith('src/domain/')),
+          )
+          .map((i) => `${file} → ${i.specifier}`),
+      ),
+    ).toEqual([]);
+  });
+
   it('never reach a test from the product', () => {
     const into = product
       .filter(({ file }) => !file.startsWith('tests/'))
@@ -91,6 +116,7 @@ describe('the rules themselves', () => {
     ['src/domain/verdicts/state.ts', 'knex', undefined],
     ['src/domain/verdicts/state.ts', 'node:fs', undefined],
     ['src/domain/verdicts/state.ts', '../../schemas/ingest', 'src/schemas/ingest.ts'],
+    ['src/domain/causes/words.ts', '../../words/language', 'src/words/language.ts'],
     ['src/features/fleet/Fleet.tsx', '../site/Site', 'src/features/site/Site.tsx'],
     ['src/features/fleet/Fleet.tsx', 'pg', undefined],
     ['src/pages/index.astro', '../server/db/pools', 'src/server/db/pools.ts'],
@@ -104,6 +130,7 @@ describe('the rules themselves', () => {
   });
 
   it.each([
+    ['src/domain/causes/words.ts', '../../words/domain-causes', 'src/words/domain-causes.ts'],
     ['src/features/fleet/Fleet.tsx', '../../lib/api', 'src/lib/api.ts'],
     ['src/pages/index.astro', '../server/http/page', 'src/server/http/page.ts'],
     ['src/server/services/x.ts', '../queries/fleet', 'src/server/queries/fleet.ts'],

@@ -4,7 +4,7 @@ import { Caution } from '../../components/ui/Caution';
 import { Heading } from '../../components/ui/Heading';
 import { Notice } from '../../components/ui/Notice';
 import { Sheet } from '../../components/ui/Sheet';
-import { RESULT_MEANS } from '../../domain/commissioning/shutdown-test-words';
+import { RESULT_MEANS } from '../../words/domain-shutdown-test';
 import { listed, volts } from '../../drawings/numbers';
 import { clockSeconds, fullTime, longDate } from '../../drawings/times';
 import { paths } from '../../schemas/paths';

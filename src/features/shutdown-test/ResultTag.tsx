@@ -1,6 +1,6 @@
 import { Tag, type Tone } from '../../components/ui/Tag';
 import type { TestResult } from '../../domain/commissioning/shutdown-test';
-import { RESULT_WORDS } from '../../domain/commissioning/shutdown-test-words';
+import { RESULT_WORDS } from '../../words/domain-shutdown-test';
 
 const LOOK: Record<TestResult, { tone: Tone; shape: string }> = {
   passed: { tone: 'petrol', shape: '✓' },

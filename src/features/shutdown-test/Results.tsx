@@ -5,7 +5,7 @@ import type {
   TestVerdict,
   UnitVerdict,
 } from '../../domain/commissioning/shutdown-test-verdict';
-import { intervalWords } from '../../domain/commissioning/shutdown-test-words';
+import { intervalWords } from '../../words/domain-shutdown-test';
 import { listed } from '../../drawings/numbers';
 import { paths } from '../../schemas/paths';
 import { ResultTag } from './ResultTag';

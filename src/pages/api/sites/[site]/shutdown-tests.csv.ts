@@ -1,4 +1,4 @@
-import { RESULT_WORDS } from '../../../../domain/commissioning/shutdown-test-words';
+import { RESULT_WORDS } from '../../../../words/domain-shutdown-test';
 import { listedTests } from '../../../../features/shutdown-test/list';
 import { testListView } from '../../../../schemas/api/shutdown-test';
 import { siteParams } from '../../../../schemas/api/site';
