@@ -1,7 +1,5 @@
+import { connectorFieldTexts as texts } from '../../words/domain-equipment-fields';
 import { NAME_FIELD, type Entry, type Field } from './fields';
-
-const MAKER = 'As the connector says';
-const LIMITS = 'Limits';
 
 export const CONNECTOR_FIELDS: readonly Field[] = [
   NAME_FIELD,
@@ -9,36 +7,29 @@ export const CONNECTOR_FIELDS: readonly Field[] = [
     kind: 'text',
     key: 'maker',
     column: 'maker',
-    label: 'Maker',
-    group: MAKER,
+    ...texts.maker,
     longest: 80,
-    hint: 'As embossed. Two halves are identical only if maker and type are.',
   },
   {
     kind: 'text',
     key: 'family',
     column: 'family',
-    label: 'Type',
-    group: MAKER,
+    ...texts.family,
     longest: 80,
-    hint: 'The maker’s own designation.',
   },
   {
     kind: 'text',
     key: 'tool',
     column: 'tool',
-    label: 'Tools',
-    group: MAKER,
+    ...texts.tool,
     longest: 200,
     optional: true,
-    hint: 'What crimps it and what opens it.',
   },
   {
     kind: 'number',
     key: 'voltageMax',
     column: 'voltage_max',
-    label: 'Maximum voltage',
-    group: LIMITS,
+    ...texts.voltageMax,
     unit: 'V',
     min: 50,
     max: 2000,
@@ -47,8 +38,7 @@ export const CONNECTOR_FIELDS: readonly Field[] = [
     kind: 'number',
     key: 'currentMax',
     column: 'current_max',
-    label: 'Maximum current',
-    group: LIMITS,
+    ...texts.currentMax,
     unit: 'A',
     min: 1,
     max: 200,
@@ -57,8 +47,7 @@ export const CONNECTOR_FIELDS: readonly Field[] = [
     kind: 'number',
     key: 'temperatureMax',
     column: 'temperature_max',
-    label: 'Maximum temperature',
-    group: LIMITS,
+    ...texts.temperatureMax,
     unit: '°C',
     min: 40,
     max: 150,

@@ -1,3 +1,5 @@
+import { connectorPairSaid as said } from '../../words/domain-equipment-connectors';
+
 /** A connector type of the catalogue, as far as mating is concerned. */
 export interface ConnectorIdentity {
   /** Public identifier of the catalogue entry. */
@@ -36,7 +38,7 @@ export interface ConnectorPairFinding {
  * Clauses as quoted by others (high confidence), the scopes of the two IEC documents from their official previews: IEC
  * 62852 covers the connectors themselves, IEC TR 63225 describes the incompatibility of makes that click together.
  */
-export const CONNECTOR_CLAUSE = 'NEC 690.33(C), 2020 and 2023; IEC 62852; IEC TR 63225';
+export const CONNECTOR_CLAUSE = said.clause;
 
 const same = (a: string, b: string): boolean =>
   a.trim().toLocaleLowerCase('en') === b.trim().toLocaleLowerCase('en');
@@ -54,23 +56,21 @@ export function connectorPairFinding(
   b: ConnectorIdentity | null,
   pairs: readonly DocumentedPair[],
 ): ConnectorPairFinding {
-  if (!a || !b) {
-    const missing = !a && !b ? 'Neither half’s type is recorded' : 'The type of one half is not recorded';
+  if (!a || !b)
     return {
       outcome: 'unknown',
       fireRisk: true,
-      words: `${missing}: whether the two may be mated can’t be told.`,
+      words: !a && !b ? said.neitherRecorded : said.oneNotRecorded,
       clause: CONNECTOR_CLAUSE,
-      remedy: 'Read maker and type off both halves and choose them from the catalogue.',
+      remedy: said.readBoth,
       evidence: null,
     };
-  }
-  const both = `${a.maker} ${a.family} and ${b.maker} ${b.family}`;
+  const [first, second] = [`${a.maker} ${a.family}`, `${b.maker} ${b.family}`];
   if (isIdenticalConnector(a, b))
     return {
       outcome: 'identical',
       fireRisk: false,
-      words: `Both halves are ${a.maker} ${a.family}.`,
+      words: said.identical(first),
       clause: CONNECTOR_CLAUSE,
       remedy: null,
       evidence: null,
@@ -82,7 +82,7 @@ export function connectorPairFinding(
     return {
       outcome: 'documented',
       fireRisk: false,
-      words: `${both} are documented as intermatable.`,
+      words: said.documented(first, second),
       clause: CONNECTOR_CLAUSE,
       remedy: null,
       evidence: pair.evidence,
@@ -90,10 +90,9 @@ export function connectorPairFinding(
   return {
     outcome: 'not_documented',
     fireRisk: true,
-    words: `${both} are not identical and no document says that they may be mated: a fire risk, even where they click together.`,
+    words: said.notDocumented(first, second),
     clause: CONNECTOR_CLAUSE,
-    remedy:
-      'Fit identical connectors on both halves, or have a manager record the document that both makers stand by.',
+    remedy: said.fitIdentical,
     evidence: null,
   };
 }

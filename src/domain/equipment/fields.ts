@@ -1,3 +1,5 @@
+import { nameFieldTexts } from '../../words/domain-equipment-fields';
+
 /**
  * What a catalogue entry is made of, field by field: forms, CSV and what is held against each other all read these
  * tables. An entry travels as a flat record by field key; connectors are named by their public identifier.
@@ -5,14 +7,20 @@
 export type EntryValue = string | number | null;
 export type Entry = Readonly<Record<string, EntryValue>>;
 
-interface Common {
-  key: string;
-  /** Of the table's row. */
-  column: string;
+/** What is said of a field. */
+export interface FieldTexts {
   label: string;
   hint?: string;
   /** Fields of one group stand together under its title. */
   group: string;
+  /** What an empty number means; without it the field must be filled. */
+  emptyMeans?: string;
+}
+
+interface Common extends Omit<FieldTexts, 'emptyMeans'> {
+  key: string;
+  /** Of the table's row. */
+  column: string;
 }
 export interface TextField extends Common {
   kind: 'text';
@@ -30,7 +38,6 @@ export interface NumberField extends Common {
   whole?: boolean;
   /** Kept value = typed value × scale (0.01 for per cent). */
   scale?: number;
-  /** What an empty field means; without it the field must be filled. */
   emptyMeans?: string;
 }
 export interface ChoiceField extends Common {
@@ -47,10 +54,8 @@ export const NAME_FIELD: TextField = {
   kind: 'text',
   key: 'name',
   column: 'name',
-  label: 'Name',
-  group: 'Type',
+  ...nameFieldTexts,
   longest: 80,
-  hint: 'As your people call it. An import finds the entry by it.',
 };
 
 /** A kept number as it is typed and shown: without the dust of binary fractions. */
@@ -85,10 +90,9 @@ export function textOf(entry: Entry, key: string): string {
 export const figure = (
   key: string,
   column: string,
-  label: string,
-  group: string,
+  texts: FieldTexts,
   unit: string,
   min: number,
   max: number,
   more: Partial<NumberField> = {},
-): NumberField => ({ kind: 'number', key, column, label, group, unit, min, max, ...more });
+): NumberField => ({ kind: 'number', key, column, ...texts, unit, min, max, ...more });

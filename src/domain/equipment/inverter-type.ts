@@ -1,3 +1,4 @@
+import { inverterFieldTexts as texts } from '../../words/domain-equipment-fields';
 import { NAME_FIELD, figure, numberOf, textOf, type Entry, type Field } from './fields';
 
 /** All that the catalogue says of an inverter's DC side. */
@@ -16,22 +17,16 @@ export interface InverterSheet {
   iscMax: number;
 }
 
-const AC = 'AC side and inputs';
-const INPUT = 'One input';
-
 export const INVERTER_FIELDS: readonly Field[] = [
   NAME_FIELD,
-  figure('acPowerMax', 'ac_power_max', 'Maximum AC power', AC, 'kW', 0.1, 10_000, { scale: 1000 }),
-  figure('inputs', 'inputs', 'Inputs', AC, '', 1, 64, {
-    whole: true,
-    hint: 'Each with a maximum-power tracker of its own.',
-  }),
-  figure('stringsPerInput', 'strings_per_input', 'Strings an input takes', AC, '', 1, 64, { whole: true }),
-  figure('voltageMax', 'voltage_max', 'Maximum DC voltage', INPUT, 'V', 30, 2000),
-  figure('mpptMin', 'mppt_min', 'MPPT window, from', INPUT, 'V', 1, 2000),
-  figure('mpptMax', 'mppt_max', 'MPPT window, to', INPUT, 'V', 1, 2000),
-  figure('currentMax', 'current_max', 'Maximum operating current', INPUT, 'A', 1, 1000),
-  figure('iscMax', 'isc_max', 'Maximum short-circuit current', INPUT, 'A', 1, 2000),
+  figure('acPowerMax', 'ac_power_max', texts.acPowerMax, 'kW', 0.1, 10_000, { scale: 1000 }),
+  figure('inputs', 'inputs', texts.inputs, '', 1, 64, { whole: true }),
+  figure('stringsPerInput', 'strings_per_input', texts.stringsPerInput, '', 1, 64, { whole: true }),
+  figure('voltageMax', 'voltage_max', texts.voltageMax, 'V', 30, 2000),
+  figure('mpptMin', 'mppt_min', texts.mpptMin, 'V', 1, 2000),
+  figure('mpptMax', 'mppt_max', texts.mpptMax, 'V', 1, 2000),
+  figure('currentMax', 'current_max', texts.currentMax, 'A', 1, 1000),
+  figure('iscMax', 'isc_max', texts.iscMax, 'A', 1, 2000),
 ];
 
 export const INVERTER_DEFAULTS: Entry = { stringsPerInput: 2 };

@@ -1,56 +1,29 @@
+import { moduleFieldTexts as texts } from '../../words/domain-equipment-fields';
 import { NAME_FIELD, figure, numberOf, textOf, type Entry, type Field } from './fields';
 import type { ModuleSheet } from './module-type';
 
-const POINTS = 'Datasheet at STC (1000 W/m², cell 25 °C, AM 1.5)';
-const COEFFICIENTS = 'Temperature coefficients';
-const BUILD = 'Build';
-const LIMITS = 'Limits';
-
 export const MODULE_FIELDS: readonly Field[] = [
   NAME_FIELD,
-  figure('vocRef', 'voc_ref', 'Open-circuit voltage voc', POINTS, 'V', 1, 200),
-  figure('iscRef', 'isc_ref', 'Short-circuit current isc', POINTS, 'A', 0.1, 40),
-  figure('vmpRef', 'vmp_ref', 'Voltage at maximum power vmp', POINTS, 'V', 1, 200, {
-    hint: 'Below voc; usually 80 to 86 % of it.',
-  }),
-  figure('impRef', 'imp_ref', 'Current at maximum power imp', POINTS, 'A', 0.1, 40, {
-    hint: 'Below isc; usually 93 to 97 % of it.',
-  }),
-  figure('betaVoc', 'beta_voc', 'Coefficient of voc', COEFFICIENTS, '%/K', -1, 0, {
-    scale: 0.01,
-    hint: 'In % per K, negative. A sheet that gives V/K or mV/K: divide by voc, times 100.',
-  }),
-  figure('alphaIsc', 'alpha_isc', 'Coefficient of isc', COEFFICIENTS, '%/K', -0.2, 0.5, {
-    scale: 0.01,
-    hint: 'In % per K. A sheet that gives mA/K: divide by isc in mA, times 100.',
-  }),
-  figure('gammaPmp', 'gamma_pmp', 'Coefficient of maximum power', COEFFICIENTS, '%/K', -1, 0, {
-    scale: 0.01,
-    hint: 'In % per K, negative.',
-  }),
-  figure('cellsInSeries', 'cells_in_series', 'Cells in series', BUILD, '', 1, 300, {
-    whole: true,
-    hint: 'Of half-cut cells count those in series: 144 half cells are 72.',
-  }),
-  figure('bypassGroups', 'bypass_groups', 'Bypass groups', BUILD, '', 1, 12, {
-    whole: true,
-    hint: 'Sub-strings with a bypass diode each; usually 3.',
-  }),
-  figure('noct', 'noct', 'Nominal operating cell temperature', BUILD, '°C', 30, 70),
-  figure('lengthM', 'length_m', 'Length', BUILD, 'm', 0.2, 4),
-  figure('widthM', 'width_m', 'Width', BUILD, 'm', 0.2, 4),
+  figure('vocRef', 'voc_ref', texts.vocRef, 'V', 1, 200),
+  figure('iscRef', 'isc_ref', texts.iscRef, 'A', 0.1, 40),
+  figure('vmpRef', 'vmp_ref', texts.vmpRef, 'V', 1, 200),
+  figure('impRef', 'imp_ref', texts.impRef, 'A', 0.1, 40),
+  figure('betaVoc', 'beta_voc', texts.betaVoc, '%/K', -1, 0, { scale: 0.01 }),
+  figure('alphaIsc', 'alpha_isc', texts.alphaIsc, '%/K', -0.2, 0.5, { scale: 0.01 }),
+  figure('gammaPmp', 'gamma_pmp', texts.gammaPmp, '%/K', -1, 0, { scale: 0.01 }),
+  figure('cellsInSeries', 'cells_in_series', texts.cellsInSeries, '', 1, 300, { whole: true }),
+  figure('bypassGroups', 'bypass_groups', texts.bypassGroups, '', 1, 12, { whole: true }),
+  figure('noct', 'noct', texts.noct, '°C', 30, 70),
+  figure('lengthM', 'length_m', texts.lengthM, 'm', 0.2, 4),
+  figure('widthM', 'width_m', texts.widthM, 'm', 0.2, 4),
   {
     kind: 'connector',
     key: 'connector',
     column: 'connector_type_id',
-    label: 'Connector of the leads',
-    group: BUILD,
-    hint: 'What the label on the lead says. Design and install checks hold it against the unit’s.',
+    ...texts.connector,
   },
-  figure('voltageSystemMax', 'voltage_system_max', 'Maximum system voltage', LIMITS, 'V', 50, 2000),
-  figure('fuseMax', 'fuse_max', 'Maximum series fuse', LIMITS, 'A', 1, 100, {
-    hint: 'Also called reverse-current rating.',
-  }),
+  figure('voltageSystemMax', 'voltage_system_max', texts.voltageSystemMax, 'V', 50, 2000),
+  figure('fuseMax', 'fuse_max', texts.fuseMax, 'A', 1, 100),
 ];
 
 /** What a new form begins with: what most sheets say. */

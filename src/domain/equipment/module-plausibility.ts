@@ -1,3 +1,4 @@
+import { modulePlausibilitySaid as said } from '../../words/domain-equipment-plausibility';
 import { checkModuleType } from '../photovoltaics/module/datasheet';
 import type { Conflict, Doubt } from './doubt';
 import { numberOf, type Entry } from './fields';
@@ -12,22 +13,22 @@ export function moduleConflicts(entry: Entry): Conflict[] {
   if (n('vmpRef') >= n('vocRef'))
     conflicts.push({
       field: 'vmpRef',
-      message: `vmp (${n('vmpRef')} V) must be below voc (${n('vocRef')} V). Check that the two aren’t swapped.`,
+      message: said.vmpAboveVoc(n('vmpRef'), n('vocRef')),
     });
   if (n('impRef') >= n('iscRef'))
     conflicts.push({
       field: 'impRef',
-      message: `imp (${n('impRef')} A) must be below isc (${n('iscRef')} A). Check that the two aren’t swapped.`,
+      message: said.impAboveIsc(n('impRef'), n('iscRef')),
     });
   if (conflicts.length === 0) {
     try {
       checkModuleType(moduleSheetOf(entry));
     } catch (error) {
       if (!(error instanceof RangeError)) throw error;
-      const cells = n('vocRef') / n('cellsInSeries');
+      const voltsACell = n('vocRef') / n('cellsInSeries');
       conflicts.push({
         field: 'cellsInSeries',
-        message: `${n('cellsInSeries')} cells make ${cells.toFixed(2)} V a cell; a cell gives 0.25 to 1.5 V. Of half-cut cells count those in series.`,
+        message: said.cellVoltage(n('cellsInSeries'), voltsACell.toFixed(2)),
       });
     }
   }
@@ -44,21 +45,13 @@ export function moduleDoubts(entry: Entry): Doubt[] {
   const fillFactor = pmp / (vocRef * iscRef);
 
   if (fillFactor < 0.6 || fillFactor > 0.88)
-    doubt(
-      'fill_factor',
-      ['vocRef', 'iscRef', 'vmpRef', 'impRef'],
-      `The fill factor is ${fillFactor.toFixed(2)}; modules have 0.60 to 0.88. One of the four values is probably of another line.`,
-    );
+    doubt('fill_factor', ['vocRef', 'iscRef', 'vmpRef', 'impRef'], said.fillFactor(fillFactor.toFixed(2)));
   const named = [...name.matchAll(/(?<![\d.,])(\d{2,3})(?=\s*W?\b)/g)]
     .map((m) => Number(m[1]))
     .filter((w) => w >= 50 && w !== 60 && w !== 72 && w !== 108 && w !== 120 && w !== 132 && w !== 144);
   const watts = named.find((w) => Math.abs(w / pmp - 1) < 0.25);
   if (watts !== undefined && Math.abs(watts / pmp - 1) > 0.02)
-    doubt(
-      'power_in_name',
-      ['vmpRef', 'impRef'],
-      `vmp times imp is ${pmp.toFixed(0)} W, and the name says ${watts} W.`,
-    );
+    doubt('power_in_name', ['vmpRef', 'impRef'], said.powerInName(pmp.toFixed(0), watts));
   const typed = Math.abs(100 * betaVoc);
   if (typed < 0.18 || typed > 0.45) {
     const asVolts = typed / vocRef;
@@ -66,41 +59,31 @@ export function moduleDoubts(entry: Entry): Doubt[] {
       'beta_voc',
       ['betaVoc'],
       asVolts >= 0.0018 && asVolts <= 0.0045
-        ? `${percent(betaVoc, 3)}/K is unusual; if the sheet says ${typed.toFixed(3)} V/K, type −${(100 * asVolts).toFixed(3)} %/K.`
-        : `${percent(betaVoc, 3)}/K is unusual: crystalline silicon has −0.20 to −0.36 %/K.`,
+        ? said.betaVocInVolts(percent(betaVoc, 3), typed.toFixed(3), `−${(100 * asVolts).toFixed(3)}`)
+        : said.betaVoc(percent(betaVoc, 3)),
     );
   }
-  if (alphaIsc < 0 || alphaIsc > 0.001)
-    doubt(
-      'alpha_isc',
-      ['alphaIsc'],
-      `${percent(alphaIsc, 3)}/K is unusual: crystalline silicon has 0.03 to 0.07 %/K. Check that it isn’t mA/K.`,
-    );
+  if (alphaIsc < 0 || alphaIsc > 0.001) doubt('alpha_isc', ['alphaIsc'], said.alphaIsc(percent(alphaIsc, 3)));
   // power falls at least as voc does and current gives a little back, so gamma lies below beta + alpha
   if (gammaPmp > betaVoc + alphaIsc + 0.0002)
     doubt(
       'gamma_pmp',
       ['gammaPmp', 'betaVoc'],
-      `Power falls by ${percent(-gammaPmp, 2)}/K, less than voc and isc together let it (${percent(-(betaVoc + alphaIsc), 2)}/K). The two coefficients may be swapped.`,
+      said.gammaPmpSmall(percent(-gammaPmp, 2), percent(-(betaVoc + alphaIsc), 2)),
     );
   if (gammaPmp < betaVoc - 0.003)
     doubt(
       'gamma_pmp',
       ['gammaPmp', 'betaVoc'],
-      `Power falls by ${percent(-gammaPmp, 2)}/K, far more than voc (${percent(-betaVoc, 2)}/K). Check both.`,
+      said.gammaPmpLarge(percent(-gammaPmp, 2), percent(-betaVoc, 2)),
     );
   const density = pmp / (lengthM * widthM);
   if (density < 90 || density > 260)
     doubt(
       'size',
       ['lengthM', 'widthM'],
-      `${pmp.toFixed(0)} W on ${(lengthM * widthM).toFixed(2)} m² are ${density.toFixed(0)} W/m²; modules have 120 to 240 W/m². Sizes are in metres.`,
+      said.size(pmp.toFixed(0), (lengthM * widthM).toFixed(2), density.toFixed(0)),
     );
-  if (fuseMax < 1.25 * iscRef)
-    doubt(
-      'fuse',
-      ['fuseMax'],
-      `The maximum series fuse is below 125 % of isc (${(1.25 * iscRef).toFixed(1)} A): no fuse would hold in full sun.`,
-    );
+  if (fuseMax < 1.25 * iscRef) doubt('fuse', ['fuseMax'], said.fuse((1.25 * iscRef).toFixed(1)));
   return doubts;
 }

@@ -1,3 +1,4 @@
+import { plausibilitySaid as said } from '../../words/domain-equipment-plausibility';
 import { CONNECTOR_DEFAULTS, CONNECTOR_FIELDS } from './connector-fields';
 import type { Conflict, Doubt } from './doubt';
 import type { EquipmentFamily } from './families';
@@ -37,15 +38,15 @@ const UNIT_RULES: Rules = {
     return [
       ...when(min > nominal, {
         field: 'shutdownVoltageMin',
-        message: `The lowest shutdown voltage (${min} V) is above the shutdown voltage (${nominal} V). Lower it.`,
+        message: said.lowestAboveNominal(min, nominal),
       }),
       ...when(nominal > max, {
         field: 'shutdownVoltageMax',
-        message: `The highest shutdown voltage (${max} V) is below the shutdown voltage (${nominal} V). Raise it.`,
+        message: said.highestBelowNominal(max, nominal),
       }),
       ...when(entry.kind !== 'shutdown_only' && entry.measures === 'none', {
         field: 'measures',
-        message: 'A unit of this kind reports what it measures. Choose a side, or the kind "Shutdown only".',
+        message: said.measuresNothing,
       }),
     ];
   },
@@ -56,46 +57,45 @@ const UNIT_RULES: Rules = {
       ...when(entry.onCommandLoss === 'holds', {
         key: 'holds',
         fields: ['onCommandLoss'],
-        message:
-          'A unit that holds its state does not shut down when its command or keep-alive stops: design checks will say so.',
+        message: said.holds,
       }),
       ...when(entry.onCommandLoss === 'shuts_down' && n('commandLossAfterS') > 30, {
         key: 'slow',
         fields: ['commandLossAfterS'],
-        message: `${n('commandLossAfterS')} s is longer than the 30 s of NEC 690.12(B).`,
+        message: said.slow(n('commandLossAfterS')),
       }),
       ...when(n('shutdownVoltageMax') > 1.2 || n('shutdownVoltageNominal') < 0.2, {
         key: 'shutdown_voltage',
         fields: ['shutdownVoltageNominal', 'shutdownVoltageMin', 'shutdownVoltageMax'],
-        message: 'Common practice is 0.6 V a unit. Check that volts were typed, for one unit, open circuit.',
+        message: said.shutdownVoltage,
       }),
       ...when(n('bypassVoltage') > -0.1, {
         key: 'bypass_voltage',
         fields: ['bypassVoltage'],
-        message: 'A bypass path usually drops 0.3 to 0.7 V (−0.3 to −0.7 V here, from experience).',
+        message: said.bypassVoltage,
       }),
       ...when(entry.outOfBox === 'passing' && entry.releasedBy === 'keep_alive', {
         key: 'passing_keep_alive',
         fields: ['outOfBox', 'releasedBy'],
-        message: 'Units released by a keep-alive usually leave the box in shutdown. Check the maker’s sheet.',
+        message: said.passingByKeepAlive,
       }),
       ...when(
         entry.kind === 'shutdown_only' && (entry.measures !== 'none' || entry.releasedBy === 'logger'),
         {
           key: 'silent_kind',
           fields: ['kind', 'measures', 'releasedBy'],
-          message: 'Units of the kind "Shutdown only" report nothing and hear no logger.',
+          message: said.silentKind,
         },
       ),
       ...when(n('powerMax') > held, {
         key: 'power',
         fields: ['powerMax'],
-        message: `Maximum voltage times maximum current is ${Math.round(held)} W: the power can’t be reached.`,
+        message: said.power(Math.round(held)),
       }),
       ...when(entry.kind !== 'shutdown_only' && (n('voltageAccuracy') === 0 || n('voltageAccuracy') > 0.05), {
         key: 'accuracy',
         fields: ['voltageAccuracy'],
-        message: 'Units usually measure within 0.5 to 3 %. Findings rest on this figure.',
+        message: said.accuracy,
       }),
     ];
   },
@@ -107,7 +107,7 @@ const CONNECTOR_RULES: Rules = {
     when(numberOf(entry, 'voltageMax') > 1500 || numberOf(entry, 'currentMax') > 125, {
       key: 'scope',
       fields: ['voltageMax', 'currentMax'],
-      message: 'IEC 62852 covers connectors up to 1500 V and 125 A: check the sheet.', // from its scope
+      message: said.connectorScope,
     }),
 };
 
@@ -117,15 +117,15 @@ const INVERTER_RULES: Rules = {
     return [
       ...when(n('mpptMin') >= n('mpptMax'), {
         field: 'mpptMax',
-        message: `The window ends at ${n('mpptMax')} V and begins at ${n('mpptMin')} V. Its end must be above its beginning.`,
+        message: said.windowBackwards(n('mpptMax'), n('mpptMin')),
       }),
       ...when(n('mpptMax') > n('voltageMax'), {
         field: 'mpptMax',
-        message: `The window ends at ${n('mpptMax')} V, above the maximum DC voltage of ${n('voltageMax')} V.`,
+        message: said.windowAboveVoltage(n('mpptMax'), n('voltageMax')),
       }),
       ...when(n('currentMax') > n('iscMax'), {
         field: 'iscMax',
-        message: `The maximum short-circuit current (${n('iscMax')} A) is below the operating current (${n('currentMax')} A). Check which is which.`,
+        message: said.shortCircuitBelow(n('iscMax'), n('currentMax')),
       }),
     ];
   },
@@ -136,12 +136,12 @@ const INVERTER_RULES: Rules = {
       ...when(reach < n('acPowerMax'), {
         key: 'reach',
         fields: ['acPowerMax', 'inputs', 'currentMax'],
-        message: `All inputs at the top of the window take ${(reach / 1000).toFixed(1)} kW, less than the AC power. Check kW, and whether the current is of one input.`,
+        message: said.reach((reach / 1000).toFixed(1)),
       }),
       ...when(n('mpptMax') < 1.5 * n('mpptMin'), {
         key: 'window',
         fields: ['mpptMin', 'mpptMax'],
-        message: 'The window is unusually narrow: full-power range and whole range are two lines of a sheet.',
+        message: said.narrowWindow,
       }),
     ];
   },

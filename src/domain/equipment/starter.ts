@@ -1,3 +1,4 @@
+import { starterNames as names, starterTexts as texts } from '../../words/domain-equipment-starter';
 import type { EquipmentFamily } from './families';
 import type { Entry } from './fields';
 import { entryOfUnit } from './unit-fields';
@@ -27,23 +28,15 @@ const connector = (
   tool: string,
 ): Entry => ({ name, maker, family, voltageMax, currentMax, temperatureMax, tool });
 
-const HALYARD = 'Halyard 4';
-const BITTERN = 'Bittern K2';
-const OXBOW = 'Oxbow 30';
+const HALYARD = names.halyard;
+const BITTERN = names.bittern;
+const OXBOW = names.oxbow;
 
 const CONNECTORS: readonly Entry[] = [
-  connector(HALYARD, 'Tarn & Fell', 'Halyard 4', 1500, 35, 105, 'Crimp die HF-46, opening fork HF-2'),
-  connector(BITTERN, 'Bittern Contact', 'K2', 1500, 30, 90, 'Crimp die K-25, two-pin fork'),
-  connector(OXBOW, 'Oxbow Electric', 'OX-30', 1000, 30, 85, 'Crimp die OX, opening key OX-k'),
-  connector(
-    'Halyard 6, wide contact',
-    'Tarn & Fell',
-    'Halyard 6',
-    1500,
-    60,
-    105,
-    'Crimp die HF-60, opening fork HF-2',
-  ),
+  connector(HALYARD, 'Tarn & Fell', 'Halyard 4', 1500, 35, 105, texts.halyardTool),
+  connector(BITTERN, 'Bittern Contact', 'K2', 1500, 30, 90, texts.bitternTool),
+  connector(OXBOW, 'Oxbow Electric', 'OX-30', 1000, 30, 85, texts.oxbowTool),
+  connector(names.halyardWide, 'Tarn & Fell', 'Halyard 6', 1500, 60, 105, texts.halyardWideTool),
 ];
 
 /** name, voc, isc, vmp, imp, beta, alpha, gamma (%/K), cells, noct, fuse, length, width, connector, system voltage */
@@ -101,7 +94,7 @@ const module_ = ([
 
 const MODULES: readonly Entry[] = [
   module_([
-    'Mono 450, 144 half cells',
+    names.mono450,
     49.3,
     11.6,
     41.1,
@@ -118,7 +111,7 @@ const MODULES: readonly Entry[] = [
     1500,
   ]),
   module_([
-    'Mono 430, 108 half cells',
+    names.mono430,
     38.7,
     13.95,
     32.3,
@@ -134,25 +127,9 @@ const MODULES: readonly Entry[] = [
     HALYARD,
     1500,
   ]),
+  module_([names.poly285, 38.5, 9.45, 31.6, 9.02, -0.31, 0.055, -0.4, 60, 46, 15, 1.65, 0.992, OXBOW, 1000]),
   module_([
-    'Poly 285, 60 cells',
-    38.5,
-    9.45,
-    31.6,
-    9.02,
-    -0.31,
-    0.055,
-    -0.4,
-    60,
-    46,
-    15,
-    1.65,
-    0.992,
-    OXBOW,
-    1000,
-  ]),
-  module_([
-    'Mono 545, 144 half cells',
+    names.mono545,
     49.7,
     13.9,
     41.8,
@@ -169,7 +146,7 @@ const MODULES: readonly Entry[] = [
     1500,
   ]),
   module_([
-    'Mono 405, 108 half cells, black',
+    names.mono405,
     37.2,
     13.8,
     31.2,
@@ -191,10 +168,10 @@ const unit = (type: UnitType & Partial<UnitSheet>): Entry => entryOfUnit(type);
 const LEADS = { connectorIn: HALYARD, connectorOut: HALYARD, voltageSystemMax: 1500, currentMax: 20 };
 
 const UNITS: readonly Entry[] = [
-  unit({ ...UNIT_PRESETS.monitored, ...LEADS, name: 'Reporting unit, both sides', measures: 'both' }),
-  unit({ ...UNIT_PRESETS.monitored, ...LEADS, name: 'Reporting unit, output side' }),
-  unit({ ...UNIT_PRESETS.shutdown_only, ...LEADS, name: 'Shutdown unit' }),
-  unit({ ...UNIT_PRESETS.optimizing, ...LEADS, name: 'Optimizing unit' }),
+  unit({ ...UNIT_PRESETS.monitored, ...LEADS, name: names.reportingBoth, measures: 'both' }),
+  unit({ ...UNIT_PRESETS.monitored, ...LEADS, name: names.reportingOutput }),
+  unit({ ...UNIT_PRESETS.shutdown_only, ...LEADS, name: names.shutdown }),
+  unit({ ...UNIT_PRESETS.optimizing, ...LEADS, name: names.optimizing }),
 ];
 
 const inverter = (
@@ -220,10 +197,10 @@ const inverter = (
 });
 
 const INVERTERS: readonly Entry[] = [
-  inverter('Home inverter 6 kW, 2 inputs', 6_000, 2, 1, 600, 90, 560, 16, 20),
-  inverter('Roof inverter 20 kW, 4 inputs', 20_000, 4, 2, 1000, 180, 850, 32, 40),
-  inverter('Roof inverter 50 kW, 8 inputs', 50_000, 8, 2, 1100, 200, 1000, 32, 40),
-  inverter('Field inverter 110 kW, 12 inputs', 110_000, 12, 2, 1500, 500, 1450, 36, 55),
+  inverter(names.home6, 6_000, 2, 1, 600, 90, 560, 16, 20),
+  inverter(names.roof20, 20_000, 4, 2, 1000, 180, 850, 32, 40),
+  inverter(names.roof50, 50_000, 8, 2, 1100, 200, 1000, 32, 40),
+  inverter(names.field110, 110_000, 12, 2, 1500, 500, 1450, 36, 55),
 ];
 
 export function starterEquipment(): StarterEquipment {
@@ -236,8 +213,7 @@ export function starterEquipment(): StarterEquipment {
       {
         first: HALYARD,
         second: BITTERN,
-        evidence:
-          'Joint mating statement TF/BC-07, edition 3, page 2 (an invented document of the starter set)',
+        evidence: texts.pairEvidence,
       },
     ],
   };

@@ -1,17 +1,14 @@
+import { unitChoices, unitFieldTexts as texts } from '../../words/domain-equipment-fields';
 import { NAME_FIELD, figure, numberOf, textOf, type Entry, type Field } from './fields';
 import { UNIT_KINDS, UNIT_PRESETS, type UnitKind, type UnitSheet, type UnitType } from './unit-type';
 
-const BEHAVIOUR = 'Behaviour';
-const SHUTDOWN = 'In shutdown';
-const MEASURING = 'What it measures';
-const LIMITS = 'Limits';
-const FITTING = 'Fitting and testing';
+/** What can be chosen, in the order in which it is shown. */
+const choices = <T extends string>(
+  values: readonly NoInfer<T>[],
+  labels: Record<T, string>,
+): { value: T; label: string }[] => values.map((value) => ({ value, label: labels[value] }));
 
-export const KIND_WORDS: Record<UnitKind, string> = {
-  shutdown_only: 'Shutdown only',
-  monitored: 'Monitored',
-  optimizing: 'Optimizing',
-};
+export const KIND_WORDS: Record<UnitKind, string> = unitChoices.kind;
 
 export const UNIT_FIELDS: readonly Field[] = [
   NAME_FIELD,
@@ -19,106 +16,67 @@ export const UNIT_FIELDS: readonly Field[] = [
     kind: 'choice',
     key: 'kind',
     column: 'kind',
-    label: 'Kind',
-    group: 'Type',
-    hint: 'A preset: in a new type it fills the form with what is usual. Every value can be changed.',
-    options: UNIT_KINDS.map((value) => ({ value, label: KIND_WORDS[value] })),
+    ...texts.kind,
+    options: choices(UNIT_KINDS, KIND_WORDS),
   },
   {
     kind: 'choice',
     key: 'outOfBox',
     column: 'out_of_box',
-    label: 'Out of the box',
-    group: BEHAVIOUR,
-    options: [
-      { value: 'shutdown', label: 'In shutdown' },
-      { value: 'passing', label: 'Passes full voltage' },
-    ],
+    ...texts.outOfBox,
+    options: choices(['shutdown', 'passing'], unitChoices.outOfBox),
   },
   {
     kind: 'choice',
     key: 'releasedBy',
     column: 'released_by',
-    label: 'Released by',
-    group: BEHAVIOUR,
-    options: [
-      { value: 'keep_alive', label: 'Keep-alive on the DC conductors' },
-      { value: 'logger', label: 'Logger, through a gateway' },
-    ],
+    ...texts.releasedBy,
+    options: choices(['keep_alive', 'logger'], unitChoices.releasedBy),
   },
   {
     kind: 'choice',
     key: 'onCommandLoss',
     column: 'on_command_loss',
-    label: 'When its command stops',
-    group: BEHAVIOUR,
-    options: [
-      { value: 'shuts_down', label: 'Shuts down' },
-      { value: 'holds', label: 'Holds its state' },
-    ],
+    ...texts.onCommandLoss,
+    options: choices(['shuts_down', 'holds'], unitChoices.onCommandLoss),
   },
-  figure('commandLossAfterS', 'command_loss_after_s', 'Shuts down after', BEHAVIOUR, 's', 0, 600, {
-    hint: 'From the last command or keep-alive.',
-  }),
-  figure('shutdownVoltageNominal', 'shutdown_voltage_nominal', 'Shutdown voltage', SHUTDOWN, 'V', 0, 5, {
-    hint: 'What one unit lets through, open circuit; 0.6 V is common practice.',
-  }),
-  figure('shutdownVoltageMin', 'shutdown_voltage_min', 'Shutdown voltage, lowest', SHUTDOWN, 'V', 0, 5),
-  figure('shutdownVoltageMax', 'shutdown_voltage_max', 'Shutdown voltage, highest', SHUTDOWN, 'V', 0, 5),
-  figure('bypassVoltage', 'bypass_voltage', 'Voltage while bypassed', SHUTDOWN, 'V', -3, 0, {
-    hint: 'Across a unit in shutdown while string current flows; negative.',
-  }),
+  figure('commandLossAfterS', 'command_loss_after_s', texts.commandLossAfterS, 's', 0, 600),
+  figure('shutdownVoltageNominal', 'shutdown_voltage_nominal', texts.shutdownVoltageNominal, 'V', 0, 5),
+  figure('shutdownVoltageMin', 'shutdown_voltage_min', texts.shutdownVoltageMin, 'V', 0, 5),
+  figure('shutdownVoltageMax', 'shutdown_voltage_max', texts.shutdownVoltageMax, 'V', 0, 5),
+  figure('bypassVoltage', 'bypass_voltage', texts.bypassVoltage, 'V', -3, 0),
   {
     kind: 'choice',
     key: 'measures',
     column: 'measures',
-    label: 'Measures',
-    group: MEASURING,
-    options: [
-      { value: 'none', label: 'Nothing' },
-      { value: 'input', label: 'Input side' },
-      { value: 'output', label: 'Output side' },
-      { value: 'both', label: 'Both sides' },
-    ],
+    ...texts.measures,
+    options: choices(['none', 'input', 'output', 'both'], unitChoices.measures),
   },
-  figure('voltageAccuracy', 'voltage_accuracy', 'Accuracy of voltage', MEASURING, '%', 0, 20, {
-    scale: 0.01,
-  }),
-  figure('currentAccuracy', 'current_accuracy', 'Accuracy of current', MEASURING, '%', 0, 20, {
-    scale: 0.01,
-  }),
-  figure('voltageInMax', 'voltage_in_max', 'Maximum input voltage', LIMITS, 'V', 10, 200),
-  figure('currentMax', 'current_max', 'Maximum current', LIMITS, 'A', 1, 40),
-  figure('powerMax', 'power_max', 'Maximum module power', LIMITS, 'W', 50, 3000),
-  figure('voltageSystemMax', 'voltage_system_max', 'Maximum system voltage', LIMITS, 'V', 50, 2000),
-  figure('insulationTestMax', 'insulation_test_max', 'Insulation test up to', FITTING, 'V', 50, 3000, {
-    emptyMeans: 'the maker allows none',
-    hint: 'What the maker allows through the unit. Empty: the maker allows none.',
-  }),
+  figure('voltageAccuracy', 'voltage_accuracy', texts.voltageAccuracy, '%', 0, 20, { scale: 0.01 }),
+  figure('currentAccuracy', 'current_accuracy', texts.currentAccuracy, '%', 0, 20, { scale: 0.01 }),
+  figure('voltageInMax', 'voltage_in_max', texts.voltageInMax, 'V', 10, 200),
+  figure('currentMax', 'current_max', texts.currentMax, 'A', 1, 40),
+  figure('powerMax', 'power_max', texts.powerMax, 'W', 50, 3000),
+  figure('voltageSystemMax', 'voltage_system_max', texts.voltageSystemMax, 'V', 50, 2000),
+  figure('insulationTestMax', 'insulation_test_max', texts.insulationTestMax, 'V', 50, 3000),
   {
     kind: 'choice',
     key: 'facesAllowed',
     column: 'faces_allowed',
-    label: 'Faces allowed',
-    group: FITTING,
-    options: [
-      { value: 'either', label: 'Either face to the back sheet' },
-      { value: 'label_out', label: 'Label out only' },
-    ],
+    ...texts.facesAllowed,
+    options: choices(['either', 'label_out'], unitChoices.facesAllowed),
   },
   {
     kind: 'connector',
     key: 'connectorIn',
     column: 'connector_in_id',
-    label: 'Connector towards the module',
-    group: FITTING,
+    ...texts.connectorIn,
   },
   {
     kind: 'connector',
     key: 'connectorOut',
     column: 'connector_out_id',
-    label: 'Connector towards the neighbours',
-    group: FITTING,
+    ...texts.connectorOut,
   },
 ];
 
