@@ -1,4 +1,4 @@
-import { listed } from '../commissioning/shutdown-test-words';
+import { closedSaid, figuresSaid, wrongSaid } from '../../words/domain-after-closing';
 import type { CaseKind, CasePart, CheckOutcome } from './cases';
 import type { CaseFigures, FiguresString } from './figures';
 
@@ -64,8 +64,6 @@ const answer = (outcome: CheckOutcome | 'wait', headline: string, lines: string[
   lines,
 });
 
-const share = (ratio: number): string => `${Math.round(ratio * 100)} %`;
-
 function chosen(look: LookAgain): FiguresString[] {
   const wanted = new Set(look.strings);
   return look.now.strings.filter((s) => wanted.has(s.id));
@@ -82,18 +80,6 @@ function slotsOf(look: LookAgain, string: FiguresString): FiguresString['slots']
 const concerned = (look: LookAgain, stringId: string, position: number): boolean => {
   const positions = look.parts.filter((p) => p.stringId === stringId && p.position !== null);
   return positions.length === 0 || positions.some((p) => p.position === position);
-};
-
-const positionsIn = (name: string, positions: readonly number[]): string =>
-  `${positions.length === 1 ? 'position' : 'positions'} ${listed(positions)} of ${name}`;
-
-const VERDICT_WORDS: Record<string, string> = {
-  stuck: 'stuck in shutdown',
-  not_shutting_down: 'not shutting down',
-  unconfirmed: 'unconfirmed',
-  late: 'late',
-  flapping: 'flapping',
-  silent: 'silent',
 };
 
 /** Verdicts that only a commanded shutdown brings out. */
@@ -115,16 +101,12 @@ function wrongNow(look: LookAgain, counts: (verdict: string) => boolean): string
             : null;
       if (what && counts(what)) by.set(what, [...(by.get(what) ?? []), slot.position]);
     }
-    const units = [...by].map(
-      ([what, at]) =>
-        `${positionsIn(string.name, at)} ${at.length === 1 ? 'is' : 'are'} ${VERDICT_WORDS[what] ?? what}`,
-    );
+    const units = [...by].map(([what, at]) => wrongSaid.are(string.name, at, what));
     if (string.finding === 'stuck_positions_unknown' && counts('stuck'))
-      units.push(`some units of ${string.name} do not pass, positions unknown`);
-    if (string.finding === 'not_shutting_down')
-      units.push(`voltage stands on ${string.name} while shutdown is commanded`);
+      units.push(wrongSaid.someDoNotPass(string.name));
+    if (string.finding === 'not_shutting_down') units.push(wrongSaid.voltageStands(string.name));
     if (string.finding === 'unexplained_voltage' && counts('stuck'))
-      units.push(`the voltage of ${string.name} is not explained`);
+      units.push(wrongSaid.voltageNotExplained(string.name));
     return units;
   });
 }
@@ -138,18 +120,14 @@ function voltageMissing(look: LookAgain): string[] {
     const unit = s.expectedVoltage / s.slots.length;
     const short = s.expectedVoltage - s.voltage;
     return s.voltage < s.expectedBand[0] && short > AFTER_CLOSING.unitShare * unit
-      ? [`${s.name} gives ${s.voltage.toFixed(1)} V of ${s.expectedVoltage.toFixed(1)} V expected`]
+      ? [figuresSaid.gives(s.name, s.voltage, s.expectedVoltage)]
       : [];
   });
 }
 
 const voltageNow = (look: LookAgain): string[] =>
   chosen(look).flatMap((s) =>
-    s.voltage === null
-      ? []
-      : [
-          `${s.name} gives ${s.voltage.toFixed(1)} V${s.expectedVoltage === null ? '' : ` of ${s.expectedVoltage.toFixed(1)} V expected`}`,
-        ],
+    s.voltage === null ? [] : [figuresSaid.gives(s.name, s.voltage, s.expectedVoltage)],
   );
 
 function relapsed(look: LookAgain, counts: (verdict: string) => boolean): string[] {
@@ -161,33 +139,29 @@ function relapsed(look: LookAgain, counts: (verdict: string) => boolean): string
       !concerned(look, r.stringId, r.position)
     )
       continue;
-    const name = look.now.strings.find((s) => s.id === r.stringId)?.name ?? 'a string';
+    const name = look.now.strings.find((s) => s.id === r.stringId)?.name ?? figuresSaid.aStringWithin;
     const key = `${name}|${r.verdict}`;
     by.set(key, (by.get(key) ?? new Set()).add(r.position));
   }
   return [...by].map(([key, positions]) => {
     const [name = '', verdict = ''] = key.split('|');
-    return `${positionsIn(
+    return wrongSaid.wereAgain(
       name,
       [...positions].sort((a, b) => a - b),
-    )} ${positions.size === 1 ? 'was' : 'were'} ${VERDICT_WORDS[verdict] ?? verdict} again since the closing`;
+      verdict,
+    );
   });
 }
 
-const sentence = (parts: readonly string[]): string => {
-  const text = listed(parts);
-  return text ? `${text[0]?.toUpperCase() ?? ''}${text.slice(1)}` : '';
-};
-
 /** Why nothing can be said at this moment; null: it can. */
 function notNow(look: LookAgain): string | null {
-  if (look.nowMs - look.closedMs < AFTER_CLOSING.graceMs) return 'The case was closed a few minutes ago.';
-  if (look.plannedWork) return 'Planned work is going on.';
-  if (look.now.light.is !== 'light') return 'There is too little light: dark units say nothing.';
+  if (look.nowMs - look.closedMs < AFTER_CLOSING.graceMs) return closedSaid.closedJustNow;
+  if (look.plannedWork) return closedSaid.plannedWork;
+  if (look.now.light.is !== 'light') return closedSaid.tooLittleLight;
   const strings = chosen(look);
-  if (strings.some((s) => s.inForce !== null)) return 'Shutdown is commanded.';
+  if (strings.some((s) => s.inForce !== null)) return closedSaid.shutdownIsCommanded;
   const old = strings.filter((s) => s.at === null || look.nowMs - Date.parse(s.at) > AFTER_CLOSING.freshMs);
-  if (old.length > 0) return `${listed(old.map((s) => s.name))} did not report in the last ten minutes.`;
+  if (old.length > 0) return closedSaid.didNotReport(old.map((s) => s.name));
   return null;
 }
 
@@ -199,20 +173,17 @@ function byUnits(look: LookAgain): LookedAgain {
   const counts = look.kind === 'silent' ? silence : any;
   const missing = look.kind === 'silent' ? [] : voltageMissing(look);
   const wrong = [...wrongNow(look, counts), ...missing];
-  if (look.cause?.open && wrong.length === 0) wrong.push('the cause that it was opened from still holds');
+  if (look.cause?.open && wrong.length === 0) wrong.push(wrongSaid.causeStillHolds);
   if (wrong.length > 0)
-    return answer('not_held', `${sentence(wrong)}.`, missing.length > 0 ? [] : voltageNow(look));
+    return answer('not_held', closedSaid.all(wrong), missing.length > 0 ? [] : voltageNow(look));
   const came = relapsed(look, counts);
-  if (came.length > 0) return answer('not_held', `${sentence(came)}.`, voltageNow(look));
-  if (look.lightMs < AFTER_CLOSING.lightMs)
-    return answer('wait', 'All is well so far; three hours of daylight are waited for.');
+  if (came.length > 0) return answer('not_held', closedSaid.all(came), voltageNow(look));
+  if (look.lightMs < AFTER_CLOSING.lightMs) return answer('wait', closedSaid.wellUntilNow);
   const units = chosen(look).reduce((n, s) => n + slotsOf(look, s).length, 0);
   const shutdownOnly = chosen(look).every((s) => s.shutdownOnly);
   return answer(
     'held',
-    shutdownOnly || units === 0
-      ? 'Nothing abnormal was found in the daylight since the closing.'
-      : `${units === 1 ? 'The unit was' : `The ${units} units were`} right in the daylight since the closing.`,
+    shutdownOnly || units === 0 ? closedSaid.nothingAbnormal : closedSaid.unitsWereRight(units),
     voltageNow(look),
   );
 }
@@ -221,36 +192,21 @@ function byUnits(look: LookAgain): LookedAgain {
 function byShutdown(look: LookAgain): LookedAgain {
   const bad = wrongNow(look, ofShutdown);
   const early = look.nowMs - look.closedMs < AFTER_CLOSING.graceMs;
-  if (look.plannedWork && look.kind !== 'not_shutting_down')
-    return answer('wait', 'Planned work is going on.');
+  if (look.plannedWork && look.kind !== 'not_shutting_down') return answer('wait', closedSaid.plannedWork);
   if (bad.length > 0 && (!early || look.kind === 'not_shutting_down'))
-    return answer('not_held', `${sentence(bad)}.`, voltageNow(look));
-  if (early) return answer('wait', 'The case was closed a few minutes ago.');
-  if (look.cause?.open)
-    return answer('not_held', 'The cause that it was opened from still holds.', voltageNow(look));
+    return answer('not_held', closedSaid.all(bad), voltageNow(look));
+  if (early) return answer('wait', closedSaid.closedJustNow);
+  if (look.cause?.open) return answer('not_held', closedSaid.causeStillHolds, voltageNow(look));
   const came = relapsed(look, ofShutdown);
-  if (came.length > 0) return answer('not_held', `${sentence(came)}.`, voltageNow(look));
+  if (came.length > 0) return answer('not_held', closedSaid.all(came), voltageNow(look));
   const strings = chosen(look);
   const followed = strings.filter((s) => s.inForce !== null && s.shutdown === s.units && s.units > 0);
   if (strings.length > 0 && followed.length === strings.length)
-    return answer(
-      'held',
-      'By what the units say they followed the shutdown that is in force. Only a meter on the conductors shows it.',
-      voltageNow(look),
-    );
+    return answer('held', closedSaid.followedByTheirWord, voltageNow(look));
   if (look.shutdownSince && look.lightMs >= AFTER_CLOSING.lightMs)
-    return answer(
-      'held',
-      'Shutdown was commanded since the closing and no unit of the case was found passing. Only a meter on the conductors shows it.',
-      voltageNow(look),
-    );
-  if (look.lightMs < AFTER_CLOSING.lightMs)
-    return answer('wait', 'No shutdown was commanded since the closing.');
-  return answer(
-    'cant_tell',
-    'No shutdown was commanded since the closing: whether the units shut down shows at the next shutdown test.',
-    voltageNow(look),
-  );
+    return answer('held', closedSaid.noneWasFoundPassing, voltageNow(look));
+  if (look.lightMs < AFTER_CLOSING.lightMs) return answer('wait', closedSaid.noShutdownYet);
+  return answer('cant_tell', closedSaid.noShutdown, voltageNow(look));
 }
 
 function byDays(look: LookAgain): LookedAgain {
@@ -258,52 +214,41 @@ function byDays(look: LookAgain): LookedAgain {
   const low: string[] = [];
   let missing = 0;
   for (const id of look.strings) {
-    const name = look.now.strings.find((s) => s.id === id)?.name ?? 'A string';
+    const name = look.now.strings.find((s) => s.id === id)?.name ?? figuresSaid.aString;
     const day = look.days.find((d) => d.stringId === id && d.ratio !== null);
     if (!day || day.ratio === null) {
       missing += 1;
       continue;
     }
-    lines.push(`${name} made ${share(day.ratio)} of what was expected on ${day.day}`);
+    lines.push(figuresSaid.made(name, day.ratio, day.day));
     if (day.ratio < AFTER_CLOSING.outputRatio && (day.z === null || day.z < -3.5)) low.push(name);
   }
-  if (low.length > 0)
-    return answer(
-      'not_held',
-      `${listed(low)} ${low.length === 1 ? 'makes' : 'make'} too little still.`,
-      lines,
-    );
-  if (missing === 0) return answer('held', 'The first day judged after the closing was as expected.', lines);
-  return answer('wait', 'No day after the closing has been judged yet.', lines);
+  if (low.length > 0) return answer('not_held', closedSaid.makeTooLittle(low), lines);
+  if (missing === 0) return answer('held', closedSaid.firstDayWasRight, lines);
+  return answer('wait', closedSaid.noDayYet, lines);
 }
 
 function byNights(look: LookAgain): LookedAgain {
-  if (!look.cause)
-    return answer(
-      'cant_tell',
-      'The case was opened without a cause: no judgement follows it.',
-      voltageNow(look),
-    );
-  if (look.nowMs - look.closedMs < AFTER_CLOSING.nightMs)
-    return answer('wait', 'The night’s judgement is waited for.');
+  if (!look.cause) return answer('cant_tell', closedSaid.noCause, voltageNow(look));
+  if (look.nowMs - look.closedMs < AFTER_CLOSING.nightMs) return answer('wait', closedSaid.nightIsWaitedFor);
   return look.cause.open
-    ? answer('not_held', 'The cause that it was opened from still holds.', voltageNow(look))
-    : answer('held', 'The cause that it was opened from is over.', voltageNow(look));
+    ? answer('not_held', closedSaid.causeStillHolds, voltageNow(look))
+    : answer('held', closedSaid.causeIsOver, voltageNow(look));
 }
 
 /** What the figures after a closing say. `wait`: look again later. */
 export function lookAgain(look: LookAgain): LookedAgain {
   const found = judge(look);
   if (found.outcome === 'wait' && look.nowMs - look.closedMs > AFTER_CLOSING.waitMs)
-    return answer('cant_tell', `For a week nothing could be told. ${found.headline}`, found.lines);
+    return answer('cant_tell', closedSaid.nothingForAWeek(found.headline), found.lines);
   return found;
 }
 
 function judge(look: LookAgain): LookedAgain {
   if (look.strings.length === 0 && !look.cause)
     return look.nowMs - look.closedMs < AFTER_CLOSING.graceMs
-      ? answer('wait', 'The case was closed a few minutes ago.')
-      : answer('cant_tell', 'The case names no string and no cause: no figure can show whether it held.');
+      ? answer('wait', closedSaid.closedJustNow)
+      : answer('cant_tell', closedSaid.namesNothing);
   switch (look.kind) {
     case 'not_shutting_down':
     case 'unconfirmed':

@@ -1,4 +1,4 @@
-/** What a case is: its kinds, its states, and their words. Kinds and states are stored: none is renamed. */
+/** What a case is: its kinds, and its states. Kinds and states are stored: none is renamed. */
 
 /** What is wrong, as the judgements name it; `other` where none of them says. Names the checklist. */
 export const CASE_KINDS = [
@@ -14,48 +14,19 @@ export const CASE_KINDS = [
 ] as const;
 export type CaseKind = (typeof CASE_KINDS)[number];
 
-export const CASE_KIND_WORDS: Record<CaseKind, string> = {
-  not_shutting_down: 'Not shutting down',
-  stuck: 'Stuck in shutdown',
-  unconfirmed: 'Shutdown not confirmed',
-  silent: 'Silent units',
-  low_output: 'Low output',
-  loop_resistance: 'Connector or lead resistance',
-  wrong_string: 'In another string than drawn',
-  weak_unit: 'Weak module or unit',
-  other: 'Something else',
-};
-
 /** The kind of a cause as a case has it; what is not known here is `other`. */
 export const caseKindOf = (kind: string): CaseKind => CASE_KINDS.find((k) => k === kind) ?? 'other';
 
 export const CASE_ORIGINS = ['cause', 'string', 'hand', 'customer'] as const;
 export type CaseOrigin = (typeof CASE_ORIGINS)[number];
-export const CASE_ORIGIN_WORDS: Record<CaseOrigin, string> = {
-  cause: 'from a cause',
-  string: 'from a string',
-  hand: 'by hand',
-  customer: 'by the customer',
-};
 
 export const CASE_STATES = ['open', 'waiting', 'done', 'no_fault_found'] as const;
 export type CaseState = (typeof CASE_STATES)[number];
-export const CASE_STATE_WORDS: Record<CaseState, string> = {
-  open: 'Open',
-  waiting: 'Waiting',
-  done: 'Done',
-  no_fault_found: 'No fault found',
-};
 export const isClosed = (state: CaseState): boolean => state === 'done' || state === 'no_fault_found';
 
 /** What Wakeline found when it looked again after closing. */
 export const CHECK_OUTCOMES = ['held', 'not_held', 'cant_tell'] as const;
 export type CheckOutcome = (typeof CHECK_OUTCOMES)[number];
-export const CHECK_OUTCOME_WORDS: Record<CheckOutcome, string> = {
-  held: 'it held',
-  not_held: 'it did not hold',
-  cant_tell: 'can’t tell',
-};
 
 /** A unit or a whole string that a case is about. */
 export interface CasePart {

@@ -1,3 +1,4 @@
+import { causePlaces } from '../../words/domain-causes';
 import type { CauseVerdict, PartKind, SiteCondition, SlotCondition, StringCondition } from './site';
 
 /**
@@ -148,7 +149,7 @@ export function candidatesFor(
       'input',
       grouped(
         items.filter((i) => i.slot === null),
-        (i) => [inputName(i.string)],
+        (i) => [inputName(i.string.inverter, i.string.input)],
       ),
       7.5,
       ALL,
@@ -232,7 +233,7 @@ function merged(candidates: Candidate[]): Candidate[] {
   return out;
 }
 
-export const inputName = (string: StringCondition): string => `${string.inverter} input ${string.input}`;
+export const inputName = causePlaces.input;
 
 const zoneReleased = (site: SiteCondition, zone: string): boolean => {
   const inForce = site.zones.find((z) => z.name === zone)?.inForce ?? null;

@@ -1,3 +1,4 @@
+import { causePlaces } from '../../words/domain-causes';
 import { candidatesFor, UNIT_RARITY, type Candidate, type Item } from './candidates';
 import {
   CAUSE_VERDICTS,
@@ -89,7 +90,7 @@ function standingAlone(verdict: CauseVerdict, item: Item, site: SiteCondition): 
   const part: Candidate['part'] =
     slot === null
       ? { kind: 'string', name: item.string.name }
-      : { kind: 'unit', name: slot.serial ?? `${item.string.name} position ${slot.position}` };
+      : { kind: 'unit', name: slot.serial ?? causePlaces.position(item.string.name, slot.position) };
   const candidate: Candidate = {
     mode: whole ? 'string' : 'unit',
     part,

@@ -1,3 +1,4 @@
+import { causeHeadlines } from '../../words/domain-causes';
 import { isHazardKind, PATIENCE, type CauseKind } from './kinds';
 
 /** What becomes of the causes that are written down, seen what is found now. Instants are epoch seconds. */
@@ -210,10 +211,9 @@ function shrunk(stored: StoredCause, units: readonly FoundUnit[]): string {
   const before = stored.units.filter((u) => u.position !== null).length;
   const left = units.filter((u) => u.position !== null).length;
   if (before === left || before < 2 || left === 0) return stored.headline;
-  return stored.headline.replace(
-    new RegExp(`\\b${before} units\\b`),
-    left === 1 ? '1 unit' : `${left} units`,
-  );
+  const [was, is] = [causeHeadlines.units(before), causeHeadlines.units(left)];
+  // as words of their own: "12 units" is not in "112 units"
+  return stored.headline.replace(new RegExp(`(?<![\\p{L}\\p{N}])${was}(?![\\p{L}\\p{N}])`, 'u'), is);
 }
 
 function alike(a: FoundCause, b: FoundCause): boolean {

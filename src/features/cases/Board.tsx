@@ -1,12 +1,7 @@
 import { useRef, useState, type KeyboardEvent } from 'react';
 import { Tag } from '../../components/ui/Tag';
-import {
-  CASE_KIND_WORDS,
-  CASE_STATES,
-  CASE_STATE_WORDS,
-  CHECK_OUTCOME_WORDS,
-  type CaseState,
-} from '../../domain/cases/cases';
+import { CASE_STATES, type CaseState } from '../../domain/cases/cases';
+import { CASE_KIND_WORDS, CASE_STATE_WORDS, CHECK_OUTCOME_WORDS } from '../../words/domain-cases';
 import type { CaseItem } from '../../schemas/api/cases';
 import { paths } from '../../schemas/paths';
 import { dueWords, OUTCOME_TONE, STATE_MEANS } from './words';

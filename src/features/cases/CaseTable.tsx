@@ -2,7 +2,7 @@ import { Notice } from '../../components/ui/Notice';
 import { Table, type Column } from '../../components/ui/Table';
 import { Tag } from '../../components/ui/Tag';
 import { RelativeTime } from '../../components/ui/Time';
-import { CASE_KIND_WORDS, CASE_STATE_WORDS, CHECK_OUTCOME_WORDS } from '../../domain/cases/cases';
+import { CASE_KIND_WORDS, CASE_STATE_WORDS, CHECK_OUTCOME_WORDS } from '../../words/domain-cases';
 import type { CaseItem, CasesView } from '../../schemas/api/cases';
 import { CASE_SORTS } from '../../schemas/lists-and-limits';
 import { paths } from '../../schemas/paths';

@@ -4,12 +4,8 @@ import { Caution } from '../../components/ui/Caution';
 import { Field } from '../../components/ui/Field';
 import { Sheet } from '../../components/ui/Sheet';
 import { RelativeTime } from '../../components/ui/Time';
-import {
-  CHECKLIST_SOURCE,
-  checklistItem,
-  checklistOf,
-  type ChecklistItem,
-} from '../../domain/cases/checklists';
+import { checklistItem, checklistOf, type ChecklistItem } from '../../domain/cases/checklists';
+import { CHECKLIST_SOURCE } from '../../words/domain-checklists';
 import { listed } from '../../drawings/numbers';
 import type { CaseInHand } from './query';
 import { checklistSheet } from '../../words/cases';

@@ -4,15 +4,8 @@ import { Field } from '../../components/ui/Field';
 import { Sheet } from '../../components/ui/Sheet';
 import { Tag } from '../../components/ui/Tag';
 import { RelativeTime } from '../../components/ui/Time';
-import {
-  CASE_KINDS,
-  CASE_KIND_WORDS,
-  CASE_ORIGIN_WORDS,
-  CASE_STATES,
-  CASE_STATE_WORDS,
-  isClosed,
-  type CaseState,
-} from '../../domain/cases/cases';
+import { CASE_KINDS, CASE_STATES, isClosed, type CaseState } from '../../domain/cases/cases';
+import { CASE_KIND_WORDS, CASE_ORIGIN_WORDS, CASE_STATE_WORDS } from '../../words/domain-cases';
 import { paths } from '../../schemas/paths';
 import { MoveDialog } from './MoveDialog';
 import type { CaseInHand } from './query';

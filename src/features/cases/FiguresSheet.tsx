@@ -1,7 +1,7 @@
 import { Sheet } from '../../components/ui/Sheet';
 import { Tag } from '../../components/ui/Tag';
 import type { FiguresString } from '../../domain/cases/figures';
-import { CHECK_OUTCOME_WORDS } from '../../domain/cases/cases';
+import { CHECK_OUTCOME_WORDS } from '../../words/domain-cases';
 import { comparedFigures, staircaseOf } from '../../drawings/case-figures';
 import { Staircase } from '../../drawings/Staircase';
 import { fullTime } from '../../drawings/times';

@@ -2,7 +2,8 @@ import { useState } from 'react';
 import { Choice } from '../../components/ui/Choice';
 import { SearchInput } from '../../components/ui/SearchInput';
 import { Segmented } from '../../components/ui/Segmented';
-import { CASE_KINDS, CASE_KIND_WORDS } from '../../domain/cases/cases';
+import { CASE_KINDS } from '../../domain/cases/cases';
+import { CASE_KIND_WORDS } from '../../words/domain-cases';
 import type { CasesPage, CasesView } from '../../schemas/api/cases';
 import { filters } from '../../words/case-board';
 

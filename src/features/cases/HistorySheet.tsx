@@ -1,7 +1,8 @@
 import { Sheet } from '../../components/ui/Sheet';
 import { Tag } from '../../components/ui/Tag';
 import { RelativeTime } from '../../components/ui/Time';
-import { CHECK_OUTCOME_WORDS, type CheckOutcome } from '../../domain/cases/cases';
+import { type CheckOutcome } from '../../domain/cases/cases';
+import { CHECK_OUTCOME_WORDS } from '../../words/domain-cases';
 import type { CaseEntry } from '../../schemas/api/cases';
 import { CommentBox } from './CommentBox';
 import type { CaseInHand } from './query';

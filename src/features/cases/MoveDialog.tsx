@@ -1,7 +1,8 @@
 import { useState } from 'react';
 import { Button } from '../../components/ui/Button';
 import { Dialog } from '../../components/ui/Dialog';
-import { CASE_STATE_WORDS, type CaseState } from '../../domain/cases/cases';
+import { type CaseState } from '../../domain/cases/cases';
+import { CASE_STATE_WORDS } from '../../words/domain-cases';
 import { TextArea } from './TextArea';
 import { moveDialog } from '../../words/cases';
 

@@ -1,4 +1,5 @@
-import { CASE_KIND_WORDS, CASE_STATES, isClosed } from '../../domain/cases/cases';
+import { CASE_STATES, isClosed } from '../../domain/cases/cases';
+import { CASE_KIND_WORDS } from '../../words/domain-cases';
 import type { CaseItem, CasesPage, CasesView } from '../../schemas/api/cases';
 import { caseBoardList } from '../../words/case-board';
 

@@ -1,9 +1,5 @@
-import {
-  CASE_STATE_WORDS,
-  CHECK_OUTCOME_WORDS,
-  type CaseState,
-  type CheckOutcome,
-} from '../../domain/cases/cases';
+import { type CaseState, type CheckOutcome } from '../../domain/cases/cases';
+import { CASE_STATE_WORDS, CHECK_OUTCOME_WORDS } from '../../words/domain-cases';
 import type { Tone } from '../../components/ui/Tag';
 import { shortDate } from '../../drawings/times';
 import type { CaseEntry, CaseItem } from '../../schemas/api/cases';

@@ -1,4 +1,4 @@
-import { CASE_KIND_WORDS } from '../../domain/cases/cases';
+import { CASE_KIND_WORDS } from '../../words/domain-cases';
 import type { CauseKind } from '../../domain/causes/kinds';
 import { energy, money } from '../../drawings/numbers';
 import type { Tone } from '../../components/ui/Tag';

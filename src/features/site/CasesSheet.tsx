@@ -3,7 +3,7 @@ import { ButtonLink } from '../../components/ui/Button';
 import { Notice } from '../../components/ui/Notice';
 import { Sheet } from '../../components/ui/Sheet';
 import { Tag } from '../../components/ui/Tag';
-import { CASE_STATE_WORDS } from '../../domain/cases/cases';
+import { CASE_STATE_WORDS } from '../../words/domain-cases';
 import { api } from '../../lib/api';
 import { queryClient } from '../../lib/query-client';
 import type { CaseItem } from '../../schemas/api/cases';

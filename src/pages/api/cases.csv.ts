@@ -3,7 +3,7 @@ import {
   CASE_ORIGIN_WORDS,
   CASE_STATE_WORDS,
   CHECK_OUTCOME_WORDS,
-} from '../../domain/cases/cases';
+} from '../../words/domain-cases';
 import { listedCases } from '../../features/cases/list';
 import { casesView } from '../../schemas/api/cases';
 import { endpoint } from '../../server/http/endpoint';

@@ -1,5 +1,6 @@
 import { caseKindOf } from '../../domain/cases/cases';
-import { CHECKLIST_SOURCE, checklistOf } from '../../domain/cases/checklists';
+import { checklistOf } from '../../domain/cases/checklists';
+import { CHECKLIST_SOURCE } from '../../words/domain-checklists';
 import { DAILY_KINDS, type CauseKind } from '../../domain/causes/kinds';
 import type { CausePage, CausesPage, CausesView, SiteStanding } from '../../schemas/api/causes';
 import type { Tx } from '../db/transaction';

@@ -1,5 +1,6 @@
 import type { Actor } from '../../domain/access/permissions';
-import { CASE_KIND_WORDS, CASE_STATE_WORDS, isClosed } from '../../domain/cases/cases';
+import { isClosed } from '../../domain/cases/cases';
+import { CASE_KIND_WORDS, CASE_STATE_WORDS } from '../../words/domain-cases';
 import { checklistItem } from '../../domain/cases/checklists';
 import { partsInWords } from '../../drawings/case-figures';
 import type { CaseChangeBody, CaseEntry, CasePage } from '../../schemas/api/cases';

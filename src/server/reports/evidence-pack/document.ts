@@ -1,5 +1,6 @@
-import { CASE_KIND_WORDS, CASE_STATE_WORDS, CHECK_OUTCOME_WORDS } from '../../../domain/cases/cases';
-import { CHECKLIST_SOURCE, checklistItem, checklistOf } from '../../../domain/cases/checklists';
+import { CASE_KIND_WORDS, CASE_STATE_WORDS, CHECK_OUTCOME_WORDS } from '../../../words/domain-cases';
+import { checklistItem, checklistOf } from '../../../domain/cases/checklists';
+import { CHECKLIST_SOURCE } from '../../../words/domain-checklists';
 import { KIND_WORDS, STAGE_WORDS } from '../../../domain/commissioning/readings/stages';
 import { eventWords } from '../../../domain/verdicts/event-words';
 import { comparedFigures, partsInWords } from '../../../drawings/case-figures';
