@@ -1,3 +1,4 @@
+import { conductorsSaid as said } from '../../words/domain-verdicts-evidence';
 import { commandedAt, lightAt, type Commanded, type StringContext } from './context';
 import { UNCHANGED, type JudgeOutcome } from './evidence';
 import type { StringFinding } from './codes';
@@ -103,20 +104,13 @@ function afterShutdown(
       measuredV: voltageV,
       expectedV: units * shutdownVoltage.nominal,
       thresholdV,
-      thresholdSource:
-        thresholdV === OUTSIDE_ARRAY_LIMIT_V
-          ? 'NEC 690.12(B)(1): 30 V outside the array boundary'
-          : 'twice the highest shutdown voltage of all its units',
+      thresholdSource: thresholdV === OUTSIDE_ARRAY_LIMIT_V ? said.outsideArray : said.twiceShutdown,
       units: raw === null ? null : likely(raw),
       unitsRange: raw === null ? null : [likely(raw * 0.85), likely(raw * 1.15)],
       ofN: units,
       atS: input.atS,
       confidence: alone ? 0.9 : 0.8,
-      couldBe: [
-        "the inverter's capacitors hold the home run up longer than assumed",
-        'another source feeds this input',
-        'the wiring differs from the as-built',
-      ],
+      couldBe: [...said.afterShutdownCouldBe],
     },
   };
 }
@@ -150,9 +144,7 @@ function whileReleased(
       measuredV: voltageV,
       expectedV: memory.sumV,
       thresholdV,
-      thresholdSource: `two thirds of a module or 3.5 standard deviations of the two measurements${
-        memory.sumAssumed ? '; the sum is what the units claim' : ''
-      }`,
+      thresholdSource: memory.sumAssumed ? said.twoThirdsOfClaims : said.twoThirds,
       units: null,
       unitsRange: null,
       ofN: units,
@@ -160,17 +152,8 @@ function whileReleased(
       confidence: 0.8,
       couldBe:
         excess > 0
-          ? [
-              'a module is wired in without its unit: the string can not shut down fully',
-              'the string has more modules than the as-built says',
-              'the string sits on another input',
-            ]
-          : [
-              ...(memory.sumAssumed ? ['a unit that claims to pass does not'] : []),
-              'an open connector or fuse: the string is not on this input',
-              'resistance in the home run',
-              'the string sits on another input',
-            ],
+          ? [...said.excessCouldBe]
+          : [...(memory.sumAssumed ? [said.claimsToPass] : []), ...said.lackCouldBe],
     },
   };
 }
@@ -208,19 +191,13 @@ function countHeld(
       measuredV: voltageV,
       expectedV: full,
       thresholdV: full - thresholdV,
-      thresholdSource: `six tenths of a module or ${STEADY_DEVIATIONS} standard deviations of the expected voltage`,
+      thresholdSource: said.sixTenths(STEADY_DEVIATIONS),
       units: allHeld ? units : Math.max(1, count(deficit)),
       unitsRange: allHeld ? [range[0], units] : range,
       ofN: units,
       atS: input.atS,
       confidence: allHeld ? 0.9 : range[0] === range[1] ? 0.85 : 0.7,
-      couldBe: allHeld
-        ? ['no keep-alive reaches the string', 'an open connector or fuse', 'snow on the modules']
-        : [
-            'modules bypassed by shade or a failed diode',
-            'fewer modules than the as-built says',
-            'units left unplugged',
-          ],
+      couldBe: [...(allHeld ? said.allHeldCouldBe : said.someHeldCouldBe)],
     },
   };
 }

@@ -1,3 +1,4 @@
+import { timeLimitSources } from '../../words/domain-verdicts-evidence';
 import type { UnitType } from '../equipment/unit-type';
 import type { InForce } from './codes';
 
@@ -67,10 +68,7 @@ export type RuleSet = 'rapid_shutdown_30s' | 'rapid_shutdown_10s' | 'hazard_cont
 
 /** The time limit of a rule set and where it comes from. Without one, 30 s is used as a yardstick and said to be one. */
 export function timeLimitOf(ruleSet: RuleSet): { timeLimitS: number; source: string } {
-  if (ruleSet === 'rapid_shutdown_10s') return { timeLimitS: 10, source: 'NEC 690.12, 2014 edition: 10 s' };
-  if (ruleSet === 'rapid_shutdown_30s')
-    return { timeLimitS: 30, source: 'NEC 690.12(B), 2017 and later editions: 30 s' };
-  return { timeLimitS: 30, source: 'no time limit applies to this site; 30 s taken as a yardstick' };
+  return { timeLimitS: ruleSet === 'rapid_shutdown_10s' ? 10 : 30, source: timeLimitSources[ruleSet] };
 }
 
 /** Default times for a report interval: grace of two reports, 30 s at least, so that the third report decides. */

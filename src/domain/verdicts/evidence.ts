@@ -1,3 +1,4 @@
+import { evidenceSaid, verdictCouldBe } from '../../words/domain-verdicts-evidence';
 import {
   CLAIMS,
   UNIT_STATES,
@@ -58,23 +59,6 @@ export interface JudgeOutcome {
 /** The outcome when nothing changed: always this one object. */
 export const UNCHANGED: JudgeOutcome = Object.freeze({ changes: Object.freeze([]), finding: null });
 
-const COULD_BE: Partial<Record<Verdict, readonly string[]>> = {
-  stuck: [
-    'the unit does not hear the keep-alive or the release',
-    'its transmitter is off or too weak there',
-    'the unit is defective',
-    'the command in force was reported wrongly',
-  ],
-  not_shutting_down: [
-    'the unit hears a keep-alive from a neighbouring transmitter',
-    'the unit is defective',
-    'the command in force was reported wrongly',
-  ],
-  unconfirmed: ['it followed and can not say so', 'it did not follow'],
-  late: ['the command reached it late', 'its report reached the logger late'],
-  flapping: ['a keep-alive at the edge of hearing', 'a loose connector', 'passing clouds on a weak module'],
-};
-
 /** How far each kind of evidence goes; from experience, and a measurement outweighs a claim. */
 function confidenceOf(verdict: Verdict, measured: boolean): number {
   if (verdict === 'unconfirmed') return 1; // it says only that nothing is known
@@ -103,13 +87,13 @@ export function evidenceFor(
     claim: CLAIMS[memory.claim[i]!] ?? 'unknown',
     basis: !reporting ? 'nothing_heard' : memory.measured[i] === 1 ? 'measured' : 'claim',
     thresholdS: verdict === 'stuck' ? graceS : limited ? timeLimitS : null,
-    thresholdSource: verdict === 'stuck' ? 'grace, a setting' : limited ? context.timeLimitSource : '',
+    thresholdSource: verdict === 'stuck' ? evidenceSaid.grace : limited ? context.timeLimitSource : '',
     followedAfterS:
       command.expects === 'shutdown' && to >= 0 && memory.output[i] === SEEN_SHUTDOWN
         ? [memory.followedFrom[i]!, to]
         : null,
     confidence: confidenceOf(verdict, memory.measured[i] === 1),
-    couldBe: [...(COULD_BE[verdict] ?? [])],
+    couldBe: [...(verdictCouldBe[verdict] ?? [])],
   };
 }
 
