@@ -1,3 +1,4 @@
+import { noticeKindTexts } from '../../words/domain-notice-kinds';
 import type { Role } from '../access/permissions';
 
 /** What people can be told of, as they choose it: one table for rules, letters, the page of notices and calls. */
@@ -36,77 +37,62 @@ export interface KindFacts {
 
 export const KINDS: Record<NoticeKind, KindFacts> = {
   hazard: {
-    name: 'Not shutting down',
-    meaning:
-      'Voltage stands where shutdown is commanded: what to treat as live, where, and whom to call. Also when it is over.',
+    ...noticeKindTexts.hazard,
     defaults: { manager: 'at_once', technician: 'at_once', analyst: 'at_once' },
-    fixed:
-      'Always a letter at once, from every site that you see, in quiet hours too: somebody may be on that roof.',
     callable: true,
   },
   cause: {
-    name: 'Causes',
-    meaning: 'What holds units or output back was found, came back, or is over.',
+    ...noticeKindTexts.cause,
     defaults: { manager: 'digest', technician: 'digest', analyst: 'digest' },
     callable: true,
   },
   silence: {
-    name: 'Out of hearing',
-    meaning: 'A gateway or units fell silent: while they are, a shutdown of them can’t be confirmed.',
+    ...noticeKindTexts.silence,
     defaults: { manager: 'digest', technician: 'at_once', analyst: 'digest' },
     callable: true,
   },
   logger: {
-    name: 'A logger is gone',
-    meaning: 'A logger has not reported for an hour: nothing of its strings is seen, a hazard neither.',
+    ...noticeKindTexts.logger,
     defaults: { manager: 'digest', technician: 'at_once', analyst: 'digest' },
     callable: true,
   },
   case_mine: {
-    name: 'Cases that ask for you',
-    meaning: 'A case was given to you, or somebody mentioned you in one.',
+    ...noticeKindTexts.case_mine,
     defaults: { manager: 'at_once', technician: 'at_once', analyst: 'at_once' },
     callable: true,
   },
   case: {
-    name: 'Other cases',
-    meaning: 'A case was opened, closed, or opened again because the figures did not come back.',
+    ...noticeKindTexts.case,
     defaults: { manager: 'digest', technician: 'in_product', analyst: 'digest' },
     callable: true,
   },
   report: {
-    name: 'A customer’s report',
-    meaning: 'A customer wrote that something looks wrong.',
+    ...noticeKindTexts.report,
     defaults: { manager: 'at_once', technician: 'at_once', analyst: 'digest' },
     callable: true,
   },
   own_report: {
-    name: 'What you reported',
-    meaning: 'Your report was taken up, looked into, or taken up again.',
+    ...noticeKindTexts.own_report,
     defaults: { customer: 'at_once' },
     callable: false,
   },
   roll_call: {
-    name: 'Roll calls',
-    meaning: 'A roll call ended.',
+    ...noticeKindTexts.roll_call,
     defaults: { manager: 'in_product', technician: 'in_product', analyst: 'nothing' },
     callable: true,
   },
   handover: {
-    name: 'Handovers',
-    meaning: 'The papers of a site were made. Customers get the letter that goes with them in any case.',
+    ...noticeKindTexts.handover,
     defaults: { manager: 'digest', technician: 'in_product', analyst: 'in_product', customer: 'in_product' },
     callable: true,
   },
   planned_work: {
-    name: 'Planned works',
-    meaning: 'Work was planned: what happens in its time raises no alarm, hazards excepted.',
+    ...noticeKindTexts.planned_work,
     defaults: { manager: 'in_product', technician: 'digest', analyst: 'in_product' },
     callable: true,
   },
   webhook: {
-    name: 'Calls to other systems',
-    meaning: 'A webhook was switched off because its target failed for days.',
+    ...noticeKindTexts.webhook,
     defaults: { manager: 'at_once' },
     callable: false,
   },

@@ -1,3 +1,4 @@
+import { noticePlaces, noticeSaid } from '../../words/domain-notices';
 import { eventWords } from '../verdicts/event-words';
 import type { NoticeEvent, Told } from './event';
 
@@ -13,8 +14,6 @@ export interface CauseWords {
 }
 
 const text = (value: unknown): string => (typeof value === 'string' ? value : '');
-const listed = (items: readonly string[]): string =>
-  items.length < 2 ? (items[0] ?? '') : `${items.slice(0, -1).join(', ')} and ${items.at(-1)}`;
 
 const NAMED_MAX = 6;
 
@@ -25,21 +24,20 @@ export function stringsInWords(units: CauseWords['units']): string {
     strings.set(stringName, [...(strings.get(stringName) ?? []), ...(position === null ? [] : [position])]);
   const names = [...strings].map(([name, at]) => {
     if (at.length === 0 || at.length > NAMED_MAX) return name;
-    const sorted = [...at].sort((a, b) => a - b).map(String);
-    return `${name} (position${at.length === 1 ? '' : 's'} ${listed(sorted)})`;
+    return noticePlaces.stringAt(
+      name,
+      [...at].sort((a, b) => a - b),
+    );
   });
-  return names.length > NAMED_MAX ? `${names.length} strings` : listed(names);
+  return names.length > NAMED_MAX ? noticePlaces.manyStrings(names.length) : noticePlaces.strings(names);
 }
 
 /** What to treat as live while something does not shut down. */
 export function liveWords(units: CauseWords['units']): string {
   // one unit that passes makes its whole string live
   const where = stringsInWords(units.map(({ stringName }) => ({ stringName, position: null })));
-  return `Treat as live: ${where ? `all of ${where}, with the home run and everything up to the inverter` : 'every string of the site'}.`;
+  return where ? noticePlaces.live(where) : noticePlaces.liveAll;
 }
-
-const OVER = 'It has stayed away for half an hour.';
-const UNCONFIRMED = 'While it is silent, a shutdown of its units can’t be confirmed: treat them as live.';
 
 /** @param cause what else is known of the cause, where the event is one's */
 export function noticeWords(told: Told, event: NoticeEvent, cause: CauseWords | null): NoticeWords {
@@ -54,35 +52,34 @@ export function noticeWords(told: Told, event: NoticeEvent, cause: CauseWords | 
       const hazard = told.kind === 'hazard';
       if (told.phase === 'goes')
         return {
-          headline: `Over: ${headline}`,
-          body: hazard
-            ? `${OVER} That is no proof: isolate, lock out and prove dead before any work, as ever.`
-            : OVER,
+          headline: noticeSaid.over(headline),
+          body: hazard ? noticeSaid.stayedAwayNoProof : noticeSaid.stayedAway,
         };
-      const back = kind === 'cause_reopened' ? `Again: ${headline}` : headline;
+      const back = kind === 'cause_reopened' ? noticeSaid.again(headline) : headline;
       if (hazard) return { headline: back, body: liveWords(cause?.units ?? []) };
       return { headline: back, body: cause?.evidence ?? '' };
     }
     case 'gateway_silent':
-      return { headline: line, body: UNCONFIRMED };
+      return { headline: line, body: noticeSaid.gatewaySilent };
     case 'logger_lost':
       return {
-        headline: `The logger ${text(detail.logger)} has not reported for an hour`.replace('  ', ' '),
-        body: 'Nothing of its strings is seen, a hazard neither: treat them as live. It keeps its readings and sends them later.',
+        headline: noticeSaid.loggerGone(text(detail.logger)),
+        body: noticeSaid.loggerGoneMeans,
       };
     case 'case_mentioned':
       return { headline: line, body: text(detail.body).slice(0, 500) };
     case 'case_reopened':
-      if (told.kind === 'own_report') return { headline: `Taken up again: ${text(detail.title)}`, body: '' };
+      if (told.kind === 'own_report')
+        return { headline: noticeSaid.takenUpAgain(text(detail.title)), body: '' };
       return { headline: line, body: text(detail.reason).slice(0, 500) };
     case 'case_assigned':
     case 'case_closed':
     case 'case_opened':
       return { headline: told.kind === 'own_report' ? ownReport(event) : line, body: '' };
     case 'hazard_acknowledged':
-      return { headline: line, body: 'It stands until the readings say otherwise.' };
+      return { headline: line, body: noticeSaid.hazardStands };
     case 'handover_made':
-      return { headline: line, body: 'The papers are with the site.' };
+      return { headline: line, body: noticeSaid.papersAreWithTheSite };
     default:
       return { headline: line, body: '' };
   }
@@ -90,8 +87,6 @@ export function noticeWords(told: Told, event: NoticeEvent, cause: CauseWords | 
 
 function ownReport({ kind, detail }: NoticeEvent): string {
   const title = text(detail.title);
-  if (kind === 'case_assigned') return `Somebody is looking into your report: ${title}`;
-  return detail.state === 'no_fault_found'
-    ? `Looked into, no fault found: ${title}`
-    : `Looked into and done: ${title}`;
+  if (kind === 'case_assigned') return noticeSaid.somebodyLooks(title);
+  return detail.state === 'no_fault_found' ? noticeSaid.noFaultFound(title) : noticeSaid.done(title);
 }
