@@ -1,3 +1,4 @@
+import { actRefused } from '../../words/domain-shutdown-test-record';
 import type { UnitKind } from '../equipment/unit-type';
 import type { InForce } from '../verdicts/codes';
 import type { RuleSet } from '../verdicts/context';
@@ -227,34 +228,33 @@ export const nextRound = (record: TestRecord): number | undefined => {
 /** Why an act makes no sense as the test stands, with the remedy; null: it does. */
 export function faultOfAct(record: TestRecord, act: Act): string | null {
   if (act.kind === 'planned') {
-    if (act.plan.strings.length === 0) return 'Choose at least one string.';
-    if (act.plan.rounds.length === 0) return 'Keep at least one round.';
+    if (act.plan.strings.length === 0) return actRefused.noString;
+    if (act.plan.rounds.length === 0) return actRefused.noRound;
     return null;
   }
-  if (record.plan === null) return 'Say first who is there and what is tested.';
+  if (record.plan === null) return actRefused.notPlanned;
   if (act.kind === 'caution_accepted' || act.kind === 'remark' || act.kind === 'proved_after') return null;
-  if (record.caution === null) return 'Read and accept the caution first.';
+  if (record.caution === null) return actRefused.cautionFirst;
   if (act.kind === 'reading_struck')
     return record.rounds.some((r) => r.readings.some((x) => x.id === act.reading))
       ? null
-      : 'There is no such reading. Reload the page.';
+      : actRefused.noSuchReading;
   if (act.kind === 'round_added') return null;
   const round = record.rounds[act.round];
-  if (!round) return 'There is no such round. Reload the page.';
+  if (!round) return actRefused.noSuchRound;
   if (act.kind === 'watch_started') {
     const open = openRound(record);
-    return open !== undefined && open !== act.round ? 'End the round before first.' : null;
+    return open !== undefined && open !== act.round ? actRefused.endRoundBefore : null;
   }
-  if (round.watchStarted === null) return 'Start watching first.';
+  if (round.watchStarted === null) return actRefused.watchFirst;
   if (act.kind === 'reading') {
-    if (!record.plan.strings.includes(act.string)) return 'This string is not part of the test.';
-    if (act.moment === 'after' && act.afterS === null) return 'Say how long after the command it was read.';
-    if (Object.values(act.voltages).every((v) => v === null)) return 'Type at least one voltage.';
+    if (!record.plan.strings.includes(act.string)) return actRefused.stringNotTested;
+    if (act.moment === 'after' && act.afterS === null) return actRefused.sayHowLong;
+    if (Object.values(act.voltages).every((v) => v === null)) return actRefused.typeVoltage;
     return null;
   }
-  if (act.kind === 'operated') return round.ended === null ? null : 'This round is over: add another one.';
-  if (act.kind === 'operated_withdrawn')
-    return round.released === null ? null : 'It was released already: strike the readings instead.';
+  if (act.kind === 'operated') return round.ended === null ? null : actRefused.roundOver;
+  if (act.kind === 'operated_withdrawn') return round.released === null ? null : actRefused.releasedAlready;
   return null;
 }
 

@@ -1,11 +1,11 @@
+import { testCautions } from '../../words/domain-shutdown-test';
+import { verdictSaid } from '../../words/domain-shutdown-test-record';
 import { judgementTimes, timeLimitOf } from '../verdicts/context';
 import { instrumentFaults, missing, notesOf } from './shutdown-test-remarks';
-import { counted, listed } from './shutdown-test-words';
 import {
   homeRunLimit,
   judgeString,
   limitSource,
-  TEST_CAUTIONS,
   testHeadline,
   WORST,
   type StringTestResult,
@@ -164,7 +164,7 @@ export function judgeTest(
     },
     strings,
     missing: missing(strings, notAlone, faults, readings, light, timeLimitS),
-    cautions: [...TEST_CAUTIONS],
+    cautions: [...testCautions],
     treatAsLive: strings.flatMap((s) =>
       s.live === null ? [] : [{ string: s.string, name: s.name, why: s.live }],
     ),
@@ -235,9 +235,7 @@ function combined(
     return {
       result,
       highestV,
-      words: only
-        ? `${words} Only its own transmitter was off: the signal of another one reaches it, or it holds.`
-        : words,
+      words: only ? verdictSaid.onlyItsOwnOff(words) : words,
     };
   }
   const whole = rounds
@@ -250,7 +248,7 @@ function combined(
     return {
       result: 'not_witnessed',
       highestV: null,
-      words: `${part.name} was not tested by the initiator.`,
+      words: verdictSaid.notByInitiator(part.name),
     };
   return { result: whole.result, words: whole.words, highestV: whole.highestV };
 }
@@ -287,7 +285,10 @@ function lowered(
   return {
     ...v,
     result: 'consistent',
-    words: `${v.words} ${listed(open.map((t) => t.name))} ${open.length === 1 ? 'was' : 'were'} not shown to shut it down alone.`,
+    words: verdictSaid.notShownAlone(
+      v.words,
+      open.map((t) => t.name),
+    ),
   };
 }
 
@@ -341,8 +342,7 @@ function whyLive(
   conductorsUp: boolean,
 ): string | null {
   const passing = units.filter((u) => u.verdict === 'not_shutting_down');
-  if (passing.length > 0)
-    return `${counted(passing.length, 'unit')} kept passing: position ${listed(passing.map((u) => u.position))}`;
+  if (passing.length > 0) return verdictSaid.keptPassing(passing.map((u) => u.position));
   return result === 'failed' || conductorsUp ? words : null;
 }
 
@@ -350,6 +350,6 @@ const stuckOf = (strings: readonly StringVerdict[]): TestVerdict['stuck'] =>
   strings.flatMap((s) => {
     const positions = s.units.filter((u) => u.stuck).map((u) => u.position);
     if (positions.length === 0) return [];
-    const words = `${counted(positions.length, 'unit')} of ${s.name} did not come back after the release: position ${listed(positions)}`;
+    const words = verdictSaid.didNotComeBack(s.name, positions);
     return [{ string: s.string, name: s.name, positions, words }];
   });

@@ -1,3 +1,4 @@
+import { shutdownTestSaid, stringTestSaid, testCautions } from '../../words/domain-shutdown-test';
 import { OUTSIDE_ARRAY_LIMIT_V } from '../verdicts/conductors';
 import type { RuleSet } from '../verdicts/context';
 
@@ -78,11 +79,6 @@ export interface ShutdownTestFinding {
   cautions: string[];
 }
 
-export const TEST_CAUTIONS = [
-  'Shutdown is not isolation: each module and its leads to its unit stay at module voltage.',
-  'A result speaks of the day of the test. Local code and the authority having jurisdiction come first.',
-] as const;
-
 /** The gravest first: the whole of a test is as good as its worst string. */
 export const WORST: readonly TestResult[] = ['failed', 'not_witnessed', 'consistent', 'passed'];
 
@@ -100,17 +96,12 @@ export function judgeShutdownTest(input: ShutdownTestInput): ShutdownTestFinding
   const missing: string[] = [];
   const together = input.transmitters.length > 1 ? input.transmitters.filter((t) => !t.takenOffAlone) : [];
   if (together.length > 0) {
-    missing.push(
-      `Take each transmitter off alone once: ${together.map((t) => t.name).join(', ')} ${together.length === 1 ? 'was' : 'were'} not. A string that hears a neighbour's transmitter shows itself only so.`,
-    );
+    missing.push(shutdownTestSaid.takeOffAlone(together.map((t) => t.name)));
     if (result === 'passed') result = 'consistent';
   }
   if (strings.some((s) => s.result === 'consistent' || s.result === 'not_witnessed'))
-    missing.push(
-      `Read + to −, + to earth and − to earth with a rated instrument at the inverter end of each home run, within ${input.timeLimitS} s.`,
-    );
-  if (input.light === 'night' || input.light === 'snow')
-    missing.push('Test again in light that powers the units: without it a dead string proves nothing.');
+    missing.push(shutdownTestSaid.readAtInverterEnds(input.timeLimitS));
+  if (input.light === 'night' || input.light === 'snow') missing.push(shutdownTestSaid.testInLight);
   const failed = strings.filter((s) => s.result === 'failed');
   return {
     result,
@@ -118,28 +109,26 @@ export function judgeShutdownTest(input: ShutdownTestInput): ShutdownTestFinding
     strings,
     limits: { afterS: input.timeLimitS, voltage: OUTSIDE_ARRAY_LIMIT_V, source: limitSource(input.ruleSet) },
     missing,
-    cautions: [...TEST_CAUTIONS],
+    cautions: [...testCautions],
   };
 }
 
 /** Where a rule set's limits come from. */
 export const limitSource = (ruleSet: RuleSet): string =>
-  ruleSet === 'rapid_shutdown_10s'
-    ? 'NEC 690.12, 2014 edition: 30 V within 10 s'
-    : ruleSet === 'rapid_shutdown_30s'
-      ? 'NEC 690.12(B)(1), 2017 and later editions: 30 V within 30 s'
-      : 'no time limit applies to this site; 30 V within 30 s taken as a yardstick';
+  ruleSet === 'rapid_shutdown_10s' || ruleSet === 'rapid_shutdown_30s'
+    ? shutdownTestSaid.limitSources[ruleSet]
+    : shutdownTestSaid.limitSources.yardstick;
 
 /** The finding of a whole test in one line. */
 export function testHeadline(result: TestResult, failed: readonly { name: string }[], all: number): string {
-  if (result === 'failed') {
-    const names = failed.map((s) => s.name);
-    return `${names.length} of ${all} strings did not shut down as required: ${names.slice(0, 4).join(', ')}${names.length > 4 ? ` and ${names.length - 4} more` : ''}`;
-  }
-  if (result === 'passed') return `All ${all} strings were measured below the limit in time`;
-  if (result === 'consistent')
-    return 'What was reported is consistent with a shutdown; a rated instrument has not shown it for every string';
-  return 'The shutdown was not witnessed';
+  const said = shutdownTestSaid.headlines;
+  if (result === 'failed')
+    return said.failed(
+      failed.map((s) => s.name),
+      all,
+    );
+  if (result === 'passed') return said.passed(all);
+  return result === 'consistent' ? said.consistent : said.notWitnessed;
 }
 
 /** Result of one string in one round of a test: see `judgeShutdownTest`. */
@@ -171,17 +160,22 @@ export function judgeString(
   if (tooHigh !== undefined)
     return made(
       'failed',
-      `${Math.max(...volts(tooHigh)).toFixed(0)} V stood on the home run ${tooHigh.afterS.toFixed(0)} s after the command; at most ${limitV} V are allowed after ${timeLimitS} s.`,
+      stringTestSaid.tooHigh(
+        Math.max(...volts(tooHigh)).toFixed(0),
+        tooHigh.afterS.toFixed(0),
+        limitV,
+        timeLimitS,
+      ),
     );
   if (s.notShuttingDown > 0)
-    return made('failed', `${s.notShuttingDown} of ${s.units} units passed on past ${timeLimitS} s.`);
+    return made('failed', stringTestSaid.passedOn(s.notShuttingDown, s.units, timeLimitS));
   if (s.conductorsLive)
     return made(
       'failed',
-      `${s.conductorsLive.voltageV.toFixed(0)} V stood at its input ${s.conductorsLive.afterS.toFixed(0)} s after the command, longer than capacitors hold it up.`,
+      stringTestSaid.inputLive(s.conductorsLive.voltageV.toFixed(0), s.conductorsLive.afterS.toFixed(0)),
     );
   if (slowest !== null && slowest[0] >= timeLimitS)
-    return made('failed', `A unit took at least ${Math.floor(slowest[0])} s; ${timeLimitS} s are allowed.`);
+    return made('failed', stringTestSaid.unitLate(Math.floor(slowest[0]), timeLimitS));
   const lit = light === 'bright' || light === 'dull';
   const complete = inTime.filter((r) => volts(r).length === 3);
   const low = complete.at(-1);
@@ -190,31 +184,34 @@ export function judgeString(
   if (low !== undefined && stayedLow && lit && s.beforeV !== null && Math.abs(s.beforeV) > limitV)
     return made(
       'passed',
-      `From ${Math.abs(s.beforeV).toFixed(0)} V to ${Math.max(...volts(low)).toFixed(1)} V at most, ${low.afterS.toFixed(0)} s after the command, by a rated instrument.`,
+      stringTestSaid.passed(
+        Math.abs(s.beforeV).toFixed(0),
+        Math.max(...volts(low)).toFixed(1),
+        low.afterS.toFixed(0),
+      ),
     );
-  if (s.conductorsStayUp)
-    return made(
-      'not_witnessed',
-      "Its units claim shutdown, but the input's voltage stays up: measure at the home run.",
-    );
-  if (!lit)
-    return made('not_witnessed', 'Too little light to power the units: a dead string proves nothing.');
+  if (s.conductorsStayUp) return made('not_witnessed', stringTestSaid.conductorsStayUp);
+  if (!lit) return made('not_witnessed', stringTestSaid.tooDark);
   if (s.followed.length === s.units && s.units > 0 && slowest !== null)
     return made(
       'consistent',
       slowest[1] <= timeLimitS
-        ? `All ${s.units} units reported shutdown within ${Math.ceil(slowest[1])} s.`
-        : `All ${s.units} units reported shutdown; the slowest took between ${Math.floor(slowest[0])} and ${Math.ceil(slowest[1])} s, so the limit of ${timeLimitS} s can not be judged from reports.`,
+        ? stringTestSaid.allInTime(s.units, Math.ceil(slowest[1]))
+        : stringTestSaid.allButWhen(s.units, Math.floor(slowest[0]), Math.ceil(slowest[1]), timeLimitS),
     );
   if (s.inputFell && s.followed.length === 0)
     return made(
       'consistent',
-      `The inverter's own measurement fell from ${s.inputFell.fromV.toFixed(0)} V to ${s.inputFell.toV.toFixed(0)} V within ${Math.ceil(s.inputFell.afterS)} s; it can not read a few volts.`,
+      stringTestSaid.inverterFell(
+        s.inputFell.fromV.toFixed(0),
+        s.inputFell.toV.toFixed(0),
+        Math.ceil(s.inputFell.afterS),
+      ),
     );
   return made(
     'not_witnessed',
     s.followed.length === 0
-      ? 'Nothing reported whether its units followed.'
-      : `${s.followed.length} of ${s.units} units reported shutdown; of the others nothing is known.`,
+      ? stringTestSaid.nothingReported
+      : stringTestSaid.someReported(s.followed.length, s.units),
   );
 }
