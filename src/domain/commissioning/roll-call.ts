@@ -1,3 +1,5 @@
+import { notStirredCouldBe } from '../../words/domain-roll-call';
+
 /**
  * The roll call: how many of those not yet heard may be expected, and by when. Times are epoch seconds.
  *
@@ -197,11 +199,7 @@ function findNotStirred(
   const chanceNone = (m: number): number =>
     pace.reduce((sum, p) => sum + p.weight * Math.pow(survival(p, elapsed), m), 0);
   const taken = new Set<RollCallUnit>();
-  const look = (
-    kind: NotStirred['kind'],
-    keyOf: (u: RollCallUnit) => string | null,
-    couldBe: string[],
-  ): Silent[] => {
+  const look = (kind: NotStirred['kind'], keyOf: (u: RollCallUnit) => string | null): Silent[] => {
     const groups = new Map<string, RollCallUnit[]>();
     for (const unit of units) {
       const key = keyOf(unit);
@@ -218,23 +216,13 @@ function findNotStirred(
     );
     return silent.map(([group, members]) => {
       for (const m of members) taken.add(m);
-      return { kind, group, members, couldBe };
+      return { kind, group, members, couldBe: notStirredCouldBe[kind] };
     });
   };
   return [
-    ...look('gateway', (u) => (u.gateway === null ? null : String(u.gateway)), [
-      'the gateway has no supply or no connection',
-      'it hears another channel',
-    ]),
-    ...look('string', (u) => u.group, [
-      'snow or deep shade on its modules',
-      'its modules are not mated to their units',
-      'no gateway is near enough',
-    ]),
-    ...look('serials', (u) => blockOf(u.serial ?? null), [
-      'a delivery of another kind or with other settings',
-      'the serials were recorded wrongly',
-    ]),
+    ...look('gateway', (u) => (u.gateway === null ? null : String(u.gateway))),
+    ...look('string', (u) => u.group),
+    ...look('serials', (u) => blockOf(u.serial ?? null)),
   ];
 }
 

@@ -1,3 +1,5 @@
+import { commissioningStepSaid } from '../../words/domain-commissioning-steps';
+
 /**
  * The steps from as-built to handover, what stands of each and what blocks it. A gap that a manager has accepted by
  * name no longer blocks, and stays visible. Pure counting over what is recorded; it judges no string.
@@ -70,14 +72,6 @@ export interface Step {
   gaps: Gap[];
 }
 
-const figure = (n: number): string => n.toLocaleString('en-GB');
-const counted = (n: number, one: string, many = `${one}s`): string => `${figure(n)} ${n === 1 ? one : many}`;
-/** "B1, B2 and 3 more". */
-function named(names: readonly string[], most = 4): string {
-  if (names.length <= most + 1)
-    return names.length < 2 ? names.join('') : `${names.slice(0, -1).join(', ')} and ${names.at(-1) ?? ''}`;
-  return `${names.slice(0, most).join(', ')} and ${names.length - most} more`;
-}
 const total = (strings: readonly StringFacts[], of: (s: StringFacts) => number): number =>
   strings.reduce((sum, s) => sum + of(s), 0);
 
@@ -88,73 +82,71 @@ interface Draft {
 }
 
 function asBuilt({ strings, zones }: CommissioningFacts): Draft {
+  const said = commissioningStepSaid.asBuilt;
   const slots = total(strings, (s) => s.slots);
   const placed = total(strings, (s) => s.placed);
   const gaps: Draft['gaps'] = [];
-  if (strings.length === 0) gaps.push({ key: 'no_strings', words: 'No string is entered.' });
+  if (strings.length === 0) gaps.push({ key: 'no_strings', words: said.noString });
   for (const s of strings)
     if (s.placed < s.slots)
       gaps.push({
         key: `serials:${s.name}`,
-        words: `${s.name}: ${counted(s.slots - s.placed, 'slot')} without a serial.`,
+        words: said.noSerial(s.name, s.slots - s.placed),
       });
-  if (zones.length === 0) gaps.push({ key: 'no_zone', words: 'No zone and no initiator are entered.' });
+  if (zones.length === 0) gaps.push({ key: 'no_zone', words: said.noZone });
   return {
     state: strings.length === 0 ? 'not_started' : gaps.length === 0 ? 'done' : 'under_way',
     words:
       strings.length === 0
-        ? 'nothing entered'
+        ? said.nothing
         : placed === slots
-          ? `${counted(slots, 'unit')}, ${counted(strings.length, 'string')}`
-          : `${figure(placed)} of ${counted(slots, 'unit')}, ${counted(strings.length, 'string')}`,
+          ? said.whole(slots, strings.length)
+          : said.part(placed, slots, strings.length),
     gaps,
   };
 }
 
 function installChecks({ strings }: CommissioningFacts): Draft {
+  const said = commissioningStepSaid.installChecks;
   const signed = strings.filter((s) => s.signedOff && !s.signOffStale);
   const begun = strings.some((s) => s.checksRecorded > 0);
   const gaps: Draft['gaps'] = [];
   for (const s of strings) {
     if (s.failedChecks.length > 0)
-      gaps.push({ key: `failed:${s.name}`, words: `${s.name}: ${named(s.failedChecks)} failed.` });
+      gaps.push({ key: `failed:${s.name}`, words: said.failed(s.name, s.failedChecks) });
     else if (s.signedOff && s.signOffStale)
       gaps.push({
         key: `stale:${s.name}`,
-        words: `${s.name} was recorded anew after it was signed: sign again.`,
+        words: said.stale(s.name),
       });
-    else if (!s.signedOff) gaps.push({ key: `unsigned:${s.name}`, words: `${s.name} is not signed off.` });
+    else if (!s.signedOff) gaps.push({ key: `unsigned:${s.name}`, words: said.unsigned(s.name) });
   }
   return {
     state: !begun ? 'not_started' : gaps.length === 0 && strings.length > 0 ? 'done' : 'under_way',
-    words: begun ? `${signed.length} of ${counted(strings.length, 'string')} signed` : 'not started',
+    words: begun ? said.signed(signed.length, strings.length) : commissioningStepSaid.notStarted,
     gaps,
   };
 }
 
 function meterReadings({ strings }: CommissioningFacts): Draft {
+  const said = commissioningStepSaid.meterReadings;
   const expected = strings.filter((s) => s.reading === 'as_expected');
   const begun = strings.some((s) => s.reading !== null);
-  const words = {
-    finding: 'read, and not as expected',
-    cant_tell: 'read, and two explanations fit',
-    proves_nothing: 'read without light that powers the units: proves nothing',
-  } as const;
-  const gaps = strings
-    .filter((s) => s.reading !== 'as_expected')
-    .map((s) =>
-      s.reading === null
-        ? { key: `unread:${s.name}`, words: `${s.name} has no reading.` }
-        : { key: `reading:${s.name}`, words: `${s.name}: ${words[s.reading as keyof typeof words]}.` },
-    );
+  const gaps = strings.flatMap((s) => {
+    if (s.reading === 'as_expected') return [];
+    return s.reading === null
+      ? [{ key: `unread:${s.name}`, words: said.unread(s.name) }]
+      : [{ key: `reading:${s.name}`, words: said[s.reading](s.name) }];
+  });
   return {
     state: !begun ? 'not_started' : gaps.length === 0 ? 'done' : 'under_way',
-    words: begun ? `${expected.length} of ${strings.length} as expected` : 'not started',
+    words: begun ? said.expected(expected.length, strings.length) : commissioningStepSaid.notStarted,
     gaps,
   };
 }
 
 function rollCall(facts: CommissioningFacts): Draft | null {
+  const said = commissioningStepSaid.rollCall;
   const answering = facts.strings.filter((s) => !s.shutdownOnly);
   if (answering.length === 0) return null; // nothing here can answer
   const roster = total(answering, (s) => s.roster);
@@ -163,47 +155,41 @@ function rollCall(facts: CommissioningFacts): Draft | null {
     .filter((s) => s.heard < s.roster)
     .map((s) => ({
       key: `unheard:${s.name}`,
-      words: `${s.name}: ${counted(s.roster - s.heard, 'unit')} not heard. Treat the string as live.`,
+      words: said.unheard(s.name, s.roster - s.heard),
     }));
   if (facts.heardUnknown > 0)
     gaps.push({
       key: 'heard_unknown',
-      words: `${counted(facts.heardUnknown, 'serial is', 'serials are')} heard and on no slot.`,
+      words: said.unknown(facts.heardUnknown),
     });
   const begun = facts.rollCallStarted || heard > 0;
   return {
     state: !begun ? 'not_started' : gaps.length === 0 && roster > 0 ? 'done' : 'under_way',
-    words: begun ? `${figure(heard)} of ${figure(roster)} heard` : 'not started',
+    words: begun ? said.heard(heard, roster) : commissioningStepSaid.notStarted,
     gaps,
   };
 }
 
-const TEST_WORDS = {
-  failed: 'did not pass its shutdown test',
-  consistent: 'was not measured: what its units report agrees, and no instrument has witnessed it',
-  not_witnessed: 'was not witnessed in its shutdown test',
-} as const;
-
 function shutdownTest({ zones, ruleSet }: CommissioningFacts): Draft {
+  const said = commissioningStepSaid.shutdownTest;
   if (ruleSet === 'none' && zones.every((z) => z.test === null))
-    return { state: 'done', words: 'none asked by the rule set', gaps: [] };
+    return { state: 'done', words: said.notAsked, gaps: [] };
   const passed = zones.filter((z) => z.test === 'passed' && z.untested.length === 0);
   const gaps = zones.flatMap((z) => {
-    if (z.test === null)
-      return [{ key: `untested:${z.name}`, words: `${z.name} has no signed shutdown test.` }];
+    if (z.test === null) return [{ key: `untested:${z.name}`, words: said.unsigned(z.name) }];
     const open: Draft['gaps'] = [];
-    if (z.test !== 'passed') open.push({ key: `test:${z.name}`, words: `${z.name} ${TEST_WORDS[z.test]}.` });
+    if (z.test !== 'passed') open.push({ key: `test:${z.name}`, words: said[z.test](z.name) });
     if (z.untested.length > 0)
       open.push({
         key: `untested:${z.name}`,
-        words: `${z.name}: ${named(z.untested)} ${z.untested.length === 1 ? 'has' : 'have'} no signed shutdown test.`,
+        words: said.unsignedStrings(z.name, z.untested),
       });
     return open;
   });
   const begun = zones.some((z) => z.test !== null);
   return {
     state: !begun ? 'not_started' : gaps.length === 0 ? 'done' : 'under_way',
-    words: begun ? `${passed.length} of ${counted(zones.length, 'zone')} passed` : 'not started',
+    words: begun ? said.passed(passed.length, zones.length) : commissioningStepSaid.notStarted,
     gaps,
   };
 }
@@ -211,7 +197,8 @@ function shutdownTest({ zones, ruleSet }: CommissioningFacts): Draft {
 function handover({ packs, stage }: CommissioningFacts): Draft {
   return {
     state: stage === 'operating' && packs > 0 ? 'done' : packs > 0 ? 'under_way' : 'not_started',
-    words: packs === 0 ? 'not made' : `version ${packs}`,
+    words:
+      packs === 0 ? commissioningStepSaid.handover.notMade : commissioningStepSaid.handover.version(packs),
     gaps: [],
   };
 }

@@ -1,3 +1,4 @@
+import { placeReasons } from '../../words/domain-place-suggestions';
 import { median, sigmaMad } from '../output/robust';
 
 /**
@@ -106,12 +107,7 @@ export function suggestPlaces(stranger: Stranger, strings: readonly SuggestStrin
     const silent = open.length - empty;
     reasons.push({
       kind: 'lacks',
-      words: [
-        empty > 0 ? `${empty === 1 ? 'one slot' : `${empty} slots`} without a unit` : '',
-        silent > 0 ? `${silent === 1 ? 'one unit' : `${silent} units`} not heard` : '',
-      ]
-        .filter(Boolean)
-        .join(', '),
+      words: placeReasons.lacks(empty, silent),
     });
     const score = reasons.reduce((sum, r) => sum + WEIGHT[r.kind], 0);
     return [{ stringId: s.id, stringName: s.name, position, reasons, score, open: open.length }];
@@ -140,15 +136,13 @@ function bySerial(
     if (!read) continue;
     const how =
       read.kind === 'exchanged'
-        ? `two characters exchanged, ${read.from} for ${read.to}`
+        ? placeReasons.exchanged(read.from, read.to)
         : isAlike(read.from, read.to)
-          ? `one character apart, ${read.from} for ${read.to}, which look alike`
-          : `one character apart, ${read.from} for ${read.to}`;
+          ? placeReasons.alike(read.from, read.to)
+          : placeReasons.apart(read.from, read.to);
     return {
       position: slot.position,
-      reasons: [
-        { kind: 'misread', words: `${slot.serial} at position ${slot.position} was not heard: ${how}` },
-      ],
+      reasons: [{ kind: 'misread', words: placeReasons.misread(slot.serial ?? '', slot.position, how) }],
     };
   }
   const near = s.slots.flatMap((slot) => {
@@ -180,7 +174,7 @@ function bySerial(
       reasons: [
         {
           kind: 'serial_run',
-          words: `serials run on through position ${only.position}: it comes between those at ${only.position - 1} and ${only.position + 1}`,
+          words: placeReasons.serialRun(only.position),
         },
       ],
     };
@@ -191,7 +185,7 @@ function bySerial(
     reasons: [
       {
         kind: 'serial_near',
-        words: `its serial is ${nearest.distance} from that at position ${nearest.slot.position}: one box`,
+        words: placeReasons.serialNear(nearest.distance, nearest.slot.position),
       },
     ],
   };
@@ -204,7 +198,7 @@ function byRadio(stranger: Stranger, s: SuggestString): Reason[] {
   const reasons: Reason[] = [
     {
       kind: 'gateway',
-      words: `${same.length} of its ${answered.length} units that answered did so by ${stranger.gateway} too`,
+      words: placeReasons.gateway(same.length, answered.length, stranger.gateway),
     },
   ];
   const signals = same.flatMap((slot) => (slot.signal === null ? [] : [slot.signal]));
@@ -214,7 +208,7 @@ function byRadio(stranger: Stranger, s: SuggestString): Reason[] {
   if (Math.abs(stranger.signal - middle) <= 2 * spread)
     reasons.push({
       kind: 'signal',
-      words: `as strong as its units (${minus(stranger.signal)} dBm; they are about ${minus(Math.round(middle))} dBm)`,
+      words: placeReasons.signal(minus(stranger.signal), minus(Math.round(middle))),
     });
   return reasons;
 }
