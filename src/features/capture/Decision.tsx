@@ -1,6 +1,6 @@
 import { useState } from 'react';
 import { checkDefinition } from '../../domain/commissioning/checks/list';
-import { STAGE_WORDS } from '../../domain/commissioning/readings/stages';
+import { STAGE_WORDS } from '../../words/domain-reading-stages';
 import { FIELD_AT } from '../../components/readings/form';
 import { Button } from '../../components/ui/Button';
 import { volts } from '../../drawings/numbers';

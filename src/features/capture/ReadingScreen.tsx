@@ -1,6 +1,7 @@
 import { useState } from 'react';
 import { readingAround } from '../../domain/commissioning/readings/around';
-import { STAGE_WORDS, type ReadingStage } from '../../domain/commissioning/readings/stages';
+import type { ReadingStage } from '../../domain/commissioning/readings/stages';
+import { STAGE_WORDS } from '../../words/domain-reading-stages';
 import { interpretReading } from '../../domain/readings/interpret';
 import type { ReadingLight } from '../../domain/readings/reading';
 import { READING_CAUTION } from '../../domain/readings/words';

@@ -1,12 +1,8 @@
 import { useMemo } from 'react';
 import { readingAround } from '../../domain/commissioning/readings/around';
 import { judgeReading } from '../../domain/commissioning/readings/judge-reading';
-import {
-  KIND_WORDS,
-  READING_KINDS,
-  STAGE_WORDS,
-  type ReadingStage,
-} from '../../domain/commissioning/readings/stages';
+import { READING_KINDS, type ReadingStage } from '../../domain/commissioning/readings/stages';
+import { KIND_WORDS, STAGE_WORDS } from '../../words/domain-reading-stages';
 import { Button } from '../../components/ui/Button';
 import { Sheet } from '../../components/ui/Sheet';
 import { FIELD_AT } from '../../components/readings/form';

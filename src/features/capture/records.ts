@@ -1,5 +1,6 @@
 import { checkDefinition } from '../../domain/commissioning/checks/list';
-import { KIND_WORDS, type ReadingKind, type ReadingStage } from '../../domain/commissioning/readings/stages';
+import type { ReadingKind, ReadingStage } from '../../domain/commissioning/readings/stages';
+import { KIND_WORDS } from '../../words/domain-reading-stages';
 import { volts } from '../../drawings/numbers';
 import type { CaptureSnapshot, CaptureString } from '../../schemas/api/capture';
 import type { CheckInput } from '../../schemas/api/checks';

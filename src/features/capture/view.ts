@@ -1,5 +1,4 @@
 import {
-  KIND_WORDS,
   READING_KINDS,
   READING_STAGES,
   stagesFor,
@@ -7,6 +6,7 @@ import {
   type ReadingKind,
   type ReadingStage,
 } from '../../domain/commissioning/readings/stages';
+import { KIND_WORDS } from '../../words/domain-reading-stages';
 import { CHECK_KEYS } from '../../domain/commissioning/checks/definition';
 import {
   COMMANDED,

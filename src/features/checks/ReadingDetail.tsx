@@ -1,5 +1,5 @@
 import { useRef, useState } from 'react';
-import { KIND_WORDS, STAGE_WORDS } from '../../domain/commissioning/readings/stages';
+import { KIND_WORDS, STAGE_WORDS } from '../../words/domain-reading-stages';
 import { READING_CAUTION } from '../../domain/readings/words';
 import { Button, ButtonLink } from '../../components/ui/Button';
 import { Caution } from '../../components/ui/Caution';

@@ -1,6 +1,6 @@
 import { useEffect, useMemo } from 'react';
 import { useQuery } from '@tanstack/react-query';
-import { STAGE_WORDS } from '../../domain/commissioning/readings/stages';
+import { STAGE_WORDS } from '../../words/domain-reading-stages';
 import { Steps } from '../../components/commissioning/Steps';
 import { Button, ButtonLink } from '../../components/ui/Button';
 import { Field } from '../../components/ui/Field';

@@ -1,5 +1,5 @@
 import { listed } from '../../drawings/numbers';
-import { STAGE_WORDS } from '../../domain/commissioning/readings/stages';
+import { STAGE_WORDS } from '../../words/domain-reading-stages';
 import { stageUnderWay, type Outcome, type ReadingRow } from './readings-rows';
 import { readingsWords } from '../../words/meter-readings';
 

@@ -3,7 +3,7 @@ import { judgeCheck } from '../../domain/commissioning/checks/judge';
 import { checksFor } from '../../domain/commissioning/checks/list';
 import { signOffState } from '../../domain/commissioning/checks/sign-off';
 import { judgedNow } from '../../domain/commissioning/readings/judged-now';
-import { STAGE_WORDS } from '../../domain/commissioning/readings/stages';
+import { STAGE_WORDS } from '../../words/domain-reading-stages';
 import type { CaptureSnapshot, CaptureString } from '../../schemas/api/capture';
 import { csvResponse } from './csv';
 

@@ -1,7 +1,7 @@
 import type { Actor } from '../../domain/access/permissions';
 import { readingAround } from '../../domain/commissioning/readings/around';
 import { judgeReading } from '../../domain/commissioning/readings/judge-reading';
-import { KIND_WORDS } from '../../domain/commissioning/readings/stages';
+import { KIND_WORDS } from '../../words/domain-reading-stages';
 import type { ReadingInput, ReadingRecord } from '../../schemas/api/readings';
 import type { Tx } from '../db/transaction';
 import { AppError, found } from '../errors';

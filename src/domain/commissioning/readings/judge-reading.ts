@@ -1,3 +1,4 @@
+import { earthReadingSaid } from '../../../words/domain-reading-stages';
 import type { ModuleType } from '../../equipment/module-type';
 import type { UnitType } from '../../equipment/unit-type';
 import { FLOATS_WITHIN, earthFinding, type EarthFinding } from '../../readings/earth';
@@ -10,7 +11,7 @@ import {
   type ReadingQuestion,
 } from '../../readings/reading';
 import { READING_CAUTION } from '../../readings/words';
-import { KIND_WORDS, type ReadingKind, type ReadingStage } from './stages';
+import type { ReadingKind, ReadingStage } from './stages';
 
 /** One reading as it was taken at a home run. Volts. */
 export interface TakenReading {
@@ -116,11 +117,10 @@ function judgeEarth(reading: TakenReading, around: ReadingAround): JudgedReading
   const positive = reading.kind === 'positive_to_earth' ? reading.voltage : around.own.positive;
   const negative = reading.kind === 'negative_to_earth' ? reading.voltage : around.own.negative;
   const { between } = around.own;
-  const missing = [
-    between === null ? KIND_WORDS.positive_to_negative : null,
-    positive === null ? KIND_WORDS.positive_to_earth : null,
-    negative === null ? KIND_WORDS.negative_to_earth : null,
-  ].filter((w) => w !== null);
+  const missing: ReadingKind[] = [];
+  if (between === null) missing.push('positive_to_negative');
+  if (positive === null) missing.push('positive_to_earth');
+  if (negative === null) missing.push('negative_to_earth');
   const found =
     between === null
       ? null
@@ -141,8 +141,8 @@ function judgeEarth(reading: TakenReading, around: ReadingAround): JudgedReading
     headline:
       found && (missing.length === 0 || found.outcome === 'fault')
         ? found.words
-        : `Can't tell yet: measure ${missing.join(' and ')} too`,
-    expected: 'the string floats: little voltage to earth, dying away',
+        : earthReadingSaid.measureToo(missing),
+    expected: earthReadingSaid.floats,
     likely: [],
     expectedV: between === null ? null : 0,
     expectedLowV: reach === null ? null : -reach,

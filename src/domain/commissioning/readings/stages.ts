@@ -7,17 +7,6 @@ export type ReadingStage = (typeof READING_STAGES)[number];
 export const READING_KINDS = ['positive_to_negative', 'positive_to_earth', 'negative_to_earth'] as const;
 export type ReadingKind = (typeof READING_KINDS)[number];
 
-export const STAGE_WORDS: Record<ReadingStage, string> = {
-  before_energising: 'before energising',
-  after_keep_alive: 'after keep-alive',
-  after_roll_call: 'after the roll call',
-};
-export const KIND_WORDS: Record<ReadingKind, string> = {
-  positive_to_negative: '+ to −',
-  positive_to_earth: '+ to earth',
-  negative_to_earth: '− to earth',
-};
-
 /** The stages at which a string of this type is read: units that a keep-alive releases answer no roll call. */
 export const stagesFor = (unitType: Pick<UnitType, 'kind' | 'releasedBy'>): ReadingStage[] =>
   unitType.kind === 'shutdown_only' || unitType.releasedBy === 'keep_alive'

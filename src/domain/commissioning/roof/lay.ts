@@ -1,3 +1,5 @@
+import { ordinal, roofPlaceSaid, WINDS } from '../../../words/domain-roof';
+
 /** A string laid on the roof row by row: where each module lies in plan, and how a person would say it. */
 
 export interface RoofPoint {
@@ -74,45 +76,25 @@ export function layString(laying: Laying): LaidModule[] {
   });
 }
 
-const COMPASS = [
-  'north',
-  'north-east',
-  'east',
-  'south-east',
-  'south',
-  'south-west',
-  'west',
-  'north-west',
-] as const;
 /** The nearest of eight winds. */
-export const compass = (azimuth: number): (typeof COMPASS)[number] =>
-  COMPASS[((Math.round(azimuth / 45) % 8) + 8) % 8] ?? 'north';
-
-const ORDINALS = 'first second third fourth fifth sixth seventh eighth ninth tenth eleventh twelfth'.split(
-  ' ',
-);
-/** "fifth", "21st": words as far as they are shorter to hear than figures. */
-export function ordinal(n: number): string {
-  const word = ORDINALS[n - 1];
-  if (word !== undefined) return word;
-  const ends = n % 100 >= 11 && n % 100 <= 13 ? 'th' : (['th', 'st', 'nd', 'rd'][n % 10] ?? 'th');
-  return `${n}${ends}`;
-}
+export const compass = (azimuth: number): string =>
+  WINDS[((Math.round(azimuth / 45) % 8) + 8) % 8] ?? String(azimuth);
 
 /** Rows on a slope from the ridge down; on a flat roof, and where rows run down the slope, in the order of laying. */
 function rowWords(row: number, rows: number, nextRowIsLower: boolean | null): string {
   if (rows === 1) return '';
-  if (nextRowIsLower === null) return `${ordinal(row + 1)} row`;
+  const said = roofPlaceSaid;
+  if (nextRowIsLower === null) return said.row(row + 1);
   const fromTop = nextRowIsLower ? row : rows - 1 - row;
-  if (rows === 2) return fromTop === 0 ? 'upper row' : 'lower row';
-  if (rows === 3) return ['upper row', 'middle row', 'lower row'][fromTop] ?? '';
-  if (fromTop === 0) return 'top row';
-  if (fromTop === rows - 1) return 'bottom row';
-  return `${ordinal(fromTop + 1)} row from the top`;
+  if (rows <= 3 && fromTop === 0) return said.upper;
+  if (rows <= 3) return fromTop === rows - 1 ? said.lower : said.middle;
+  if (fromTop === 0) return said.top;
+  if (fromTop === rows - 1) return said.bottom;
+  return said.fromTop(fromTop + 1);
 }
 
 /** The side from which columns count, if nobody gives it another name: "west end". */
-export const startSide = (direction: number): string => `${compass(direction + 180)} end`;
+export const startSide = (direction: number): string => roofPlaceSaid.sideAt(compass(direction + 180));
 
 /**
  * How a person finds each module: "upper row, fifth from the gable".
@@ -125,9 +107,12 @@ export function placeWords(laying: Laying, laid: readonly LaidModule[], from: st
   // under 3° a roof has no up and down that an eye sees (common practice)
   const lower = laying.surfaceTilt < 3 || Math.abs(downhill) < 0.5 ? null : downhill > 0;
   const side = from.trim() === '' ? startSide(laying.direction) : from.trim();
-  return laid.map((m) =>
-    [rowWords(m.row, rows, lower), `${ordinal(m.column + 1)} from the ${side}`].filter(Boolean).join(', '),
-  );
+  return laid.map((m) => {
+    const row = rowWords(m.row, rows, lower);
+    return row === ''
+      ? roofPlaceSaid.inOnlyRow(m.column + 1, side)
+      : roofPlaceSaid.inRow(row, m.column + 1, side);
+  });
 }
 
 /** Where the next string would start: below or beside the last row of this one. */

@@ -1,3 +1,4 @@
+import { outlineSaid } from '../../../words/domain-roof';
 import type { RoofPoint } from './lay';
 
 /** The outline of a roof: a closed line through points in metres, y to the north. */
@@ -26,19 +27,18 @@ const cross = (a: Pair, b: Pair, c: Pair, d: Pair): boolean =>
 /** What is wrong with an outline, in words with a remedy; null: nothing. No points at all is no outline, and right. */
 export function outlineFault(outline: Outline): string | null {
   if (outline.length === 0) return null;
-  if (outline.length < 3) return 'An outline has three points at least. Set more, or remove all.';
-  if (outline.length > OUTLINE_POINTS_MAX)
-    return `An outline has ${OUTLINE_POINTS_MAX} points at most. Leave some out.`;
+  if (outline.length < 3) return outlineSaid.fewPoints;
+  if (outline.length > OUTLINE_POINTS_MAX) return outlineSaid.manyPoints(OUTLINE_POINTS_MAX);
   if (outline.some((p) => p.some((v) => !Number.isFinite(v) || Math.abs(v) > ROOF_MAX_M)))
-    return `Points lie from −${ROOF_MAX_M} to ${ROOF_MAX_M} m.`;
+    return outlineSaid.farPoints(ROOF_MAX_M);
   const n = outline.length;
   for (let i = 0; i < n; i++)
     for (let j = i + 2; j < n; j++) {
       const [a, b, c, d] = [outline[i], outline[(i + 1) % n], outline[j], outline[(j + 1) % n]];
       if (a && b && c && d && (j + 1) % n !== i && cross(a, b, c, d))
-        return `The line after point ${i + 1} crosses the line after point ${j + 1}. Move one of the points.`;
+        return outlineSaid.crossing(i + 1, j + 1);
     }
-  if (outlineArea(outline) < 1) return 'The outline holds less than a square metre. Are these metres?';
+  if (outlineArea(outline) < 1) return outlineSaid.small;
   return null;
 }
 

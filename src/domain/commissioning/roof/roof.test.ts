@@ -1,6 +1,7 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import { compass, layString, ordinal, placeWords, startAfter, type Laying } from './lay';
+import { ordinal } from '../../../words/domain-roof';
+import { compass, layString, placeWords, startAfter, type Laying } from './lay';
 import { outlineArea, outlineFault, within, type Outline } from './outline';
 
 const LAYING: Laying = {

@@ -1,7 +1,7 @@
 import { CASE_KIND_WORDS, CASE_STATE_WORDS, CHECK_OUTCOME_WORDS } from '../../../words/domain-cases';
 import { checklistItem, checklistOf } from '../../../domain/cases/checklists';
 import { CHECKLIST_SOURCE } from '../../../words/domain-checklists';
-import { KIND_WORDS, STAGE_WORDS } from '../../../domain/commissioning/readings/stages';
+import { KIND_WORDS, STAGE_WORDS } from '../../../words/domain-reading-stages';
 import { eventWords } from '../../../domain/verdicts/event-words';
 import { comparedFigures, partsInWords } from '../../../drawings/case-figures';
 import { volts } from '../../../drawings/numbers';
