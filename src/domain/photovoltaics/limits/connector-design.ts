@@ -1,3 +1,4 @@
+import { connectorDesignSaid, type ConnectorPlace } from '../../../words/domain-photovoltaics-inputs';
 import {
   connectorPairFinding,
   type ConnectorIdentity,
@@ -30,16 +31,12 @@ export function connectorFindings(
     .sort((a, b) => RANK[a.outcome] - RANK[b.outcome])[0];
   const out = of(connectorOut);
   return [
-    ...(worst ? [said('connector_module_unit', 'Module lead on unit', worst)] : []),
-    said('connector_unit_unit', 'Unit on its neighbour', connectorPairFinding(out, out, pairs)),
+    ...(worst ? [findingAt('connector_module_unit', worst)] : []),
+    findingAt('connector_unit_unit', connectorPairFinding(out, out, pairs)),
   ];
 }
 
-function said(
-  check: 'connector_module_unit' | 'connector_unit_unit',
-  where: string,
-  found: ConnectorPairFinding,
-): DesignFinding {
+function findingAt(check: ConnectorPlace, found: ConnectorPairFinding): DesignFinding {
   const unknown = found.outcome === 'unknown';
   return {
     check,
@@ -48,14 +45,11 @@ function said(
     limit: null,
     unit: '',
     safety: true,
-    words: `${where}: ${unknown ? 'the catalogue doesn’t say which connectors these types have.' : found.words}${found.evidence ? ` ${found.evidence}.` : ''}`,
+    words: unknown
+      ? connectorDesignSaid.unknown(check)
+      : connectorDesignSaid.found(check, found.words, found.evidence),
     clause: found.clause,
-    remedy: unknown ? 'Enter the connectors of module and unit type in the catalogue.' : found.remedy,
-    alternatives:
-      found.outcome === 'not_documented'
-        ? [
-            'The catalogue may name another connector than stands on the roof: the install check looks at both halves.',
-          ]
-        : [],
+    remedy: unknown ? connectorDesignSaid.enterConnectors : found.remedy,
+    alternatives: found.outcome === 'not_documented' ? [connectorDesignSaid.lookAtRoof] : [],
   };
 }

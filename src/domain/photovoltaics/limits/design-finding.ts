@@ -1,3 +1,5 @@
+import { designFindingSaid as said } from '../../../words/domain-photovoltaics-limits';
+
 export const DESIGN_CHECKS = [
   'string_voltage_inverter',
   'string_voltage_building',
@@ -52,10 +54,7 @@ export interface DesignFinding {
 export function figure(value: number, unit: string): string {
   const size = Math.abs(value);
   const digits = size < 20 && !Number.isInteger(Math.round(size * 100) / 100) ? (size < 2 ? 2 : 1) : 0;
-  const [whole = '', decimals] = size.toFixed(digits).split('.');
-  const grouped = whole.replace(/\B(?=(\d{3})+$)/g, ',');
-  const text = `${value < 0 && Number(size.toFixed(digits)) > 0 ? '−' : ''}${grouped}${decimals ? `.${decimals}` : ''}`;
-  return unit ? `${text}\u00a0${unit}` : text;
+  return said.figure(Number(value.toFixed(digits)), digits, unit); // ties as toFixed rounds them
 }
 
 interface Limit {
@@ -74,10 +73,10 @@ interface Limit {
   remedy: string;
   alternatives?: string[];
   /**
-   * Where the value rests on an estimate: what it would be under conditions that certainly occur. Only if that is
-   * beyond the limit too can more than "can't tell" be said.
+   * Where the value rests on an estimated temperature: what it would be under conditions that certainly occur. Only if
+   * that is beyond the limit too can more than "can't tell" be said.
    */
-  certain?: { value: number; because: string } | undefined;
+  certain?: number | undefined;
 }
 
 /** A value held against a limit. */
@@ -89,7 +88,7 @@ export function held(of: Limit): DesignFinding {
       ...shared,
       value: null, // without a limit the figure only keeps apart strings of which the same is to be said
       outcome: 'cannot_tell',
-      words: of.missing ?? 'The limit isn’t entered.',
+      words: of.missing ?? said.noLimit,
       remedy: of.remedy,
       alternatives: [],
     };
@@ -98,12 +97,12 @@ export function held(of: Limit): DesignFinding {
     return of.bound === 'at_least' ? figureHeld >= limit - slack : figureHeld <= limit + slack;
   };
   if (holds(value)) return { ...shared, outcome: 'within', words: of.within, remedy: null, alternatives: [] };
-  if (of.certain && holds(of.certain.value))
+  if (of.certain !== undefined && holds(of.certain))
     return {
       ...shared,
       outcome: 'cannot_tell',
-      words: `${of.exceeded} ${of.certain.because}`,
-      remedy: 'Enter the site’s design temperatures; then this can be told.',
+      words: said.onEstimate(of.exceeded),
+      remedy: said.enterTemperatures,
       alternatives: [of.remedy, ...(of.alternatives ?? [])],
     };
   return {

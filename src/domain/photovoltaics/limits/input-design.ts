@@ -1,3 +1,4 @@
+import { inputDesignSaid as said } from '../../../words/domain-photovoltaics-inputs';
 import { voltageAtTemperature } from './string-sizing';
 import { figure, type DesignFinding } from './design-finding';
 import { modulesOf, type BuiltString } from './built-site';
@@ -8,7 +9,6 @@ const VOLTAGE_SPREAD = 0.02;
 const TILT_SPREAD = 5;
 const AZIMUTH_SPREAD = 10;
 
-const names = (strings: readonly BuiltString[]): string => strings.map((s) => s.name).join(', ');
 const around = (a: number, b: number): number => {
   const gap = Math.abs(a - b) % 360;
   return Math.min(gap, 360 - gap);
@@ -31,12 +31,14 @@ export function sharingFindings(parallel: readonly BuiltString[]): DesignFinding
       safety: true,
       // what holds everywhere names no input, so that it is said once
       words: fits
-        ? `${parallel.length} strings share an input; its type takes ${inverter.stringsPerInput}.`
-        : `${first.input.name} has ${parallel.length} strings (${names(parallel)}); its type takes ${inverter.stringsPerInput}.`,
-      clause: 'Inverter’s instructions',
-      remedy: fits
-        ? null
-        : 'Spread the strings over more inputs, or join them in a combiner that the maker allows.',
+        ? said.stringsFit(parallel.length, inverter.stringsPerInput)
+        : said.tooManyStrings(
+            first.input.name,
+            parallel.map((s) => s.name),
+            inverter.stringsPerInput,
+          ),
+      clause: said.stringsClause,
+      remedy: fits ? null : said.stringsRemedy,
       alternatives: [],
     });
   }
@@ -52,14 +54,9 @@ export function sharingFindings(parallel: readonly BuiltString[]): DesignFinding
       unit: '',
       safety: true,
       words:
-        kinds.size > 1
-          ? `${first.input.name} joins strings of different kinds of units (${types.join(', ')}): they are released and shut down differently, and while one string is held the other feeds its conductors.`
-          : `${first.input.name} joins strings of different unit types of one kind (${types.join(', ')}).`,
-      clause: 'Units’ instructions; common practice: one kind on an input',
-      remedy:
-        kinds.size > 1
-          ? 'Give each kind an input of its own.'
-          : 'Ask the makers whether their units may share an input.',
+        kinds.size > 1 ? said.mixedKinds(first.input.name, types) : said.mixedTypes(first.input.name, types),
+      clause: said.mixedUnitsClause,
+      remedy: kinds.size > 1 ? said.mixedKindsRemedy : said.mixedTypesRemedy,
       alternatives: [],
     });
   if (kinds.has('optimizing')) return findings;
@@ -74,7 +71,6 @@ function voltageSpread(parallel: readonly BuiltString[]): DesignFinding {
   const [low, high] = [Math.min(...all), Math.max(...all)];
   const spread = high / low - 1;
   const fits = spread <= VOLTAGE_SPREAD;
-  const counts = parallel.map((s) => `${s.name} ${s.slots.length}`).join(', ');
   return {
     check: 'shared_input_voltage',
     outcome: fits ? 'within' : 'exceeded',
@@ -83,10 +79,15 @@ function voltageSpread(parallel: readonly BuiltString[]): DesignFinding {
     unit: '',
     safety: false,
     words: fits
-      ? `Strings of one input have voltages at maximum power within ${figure(100 * VOLTAGE_SPREAD, '%')} of each other.`
-      : `The strings of ${parallel[0]?.input.name ?? 'the input'} share one voltage but would work at ${figure(Math.round(low), 'V')} to ${figure(Math.round(high), 'V')} (modules: ${counts}). The short one pulls the others down; it costs energy, and in poor light current can flow back.`,
-    clause: 'Strings in parallel share one voltage; own rule: 2 %',
-    remedy: fits ? null : 'Give strings of different length inputs of their own.',
+      ? said.voltagesAlike(figure(100 * VOLTAGE_SPREAD, '%'))
+      : said.voltagesDiffer(
+          parallel[0]?.input.name ?? null,
+          figure(Math.round(low), 'V'),
+          figure(Math.round(high), 'V'),
+          parallel.map((s) => ({ name: s.name, modules: s.slots.length })),
+        ),
+    clause: said.voltagesClause,
+    remedy: fits ? null : said.voltagesRemedy,
     alternatives: [],
   };
 }
@@ -110,9 +111,9 @@ function planes(parallel: readonly BuiltString[]): DesignFinding[] {
       limit: 1,
       unit: '',
       safety: false,
-      words: `${first.input.name} joins strings of different planes (${all.join(', ')}): their currents add up under one tracker, and low output of one can’t be told from a cloud on the other. It costs little energy and is no hazard.`,
-      clause: 'Own rule: 5° of tilt, 10° of azimuth',
-      remedy: 'Give each plane inputs of its own where there are enough.',
+      words: said.planesDiffer(first.input.name, all),
+      clause: said.planesClause,
+      remedy: said.planesRemedy,
       alternatives: [],
     },
   ];

@@ -1,10 +1,6 @@
+import { slotDesignSaid as said } from '../../../words/domain-photovoltaics-limits';
 import { figure, type DesignFinding } from './design-finding';
 import type { BuiltString } from './built-site';
-
-const list = (items: readonly (string | number)[]): string =>
-  items.length < 2
-    ? String(items[0] ?? '')
-    : `${items.slice(0, -1).join(', ')} and ${items[items.length - 1]}`;
 
 /** Modules of one string whose imp differs by more than this share limit each other noticeably; own rule. */
 const MISMATCH = 0.03;
@@ -24,13 +20,10 @@ export function slotFindings({ slots, unit }: Pick<BuiltString, 'slots' | 'unit'
       limit: 0,
       unit: '',
       safety: true,
-      words:
-        empty.length > 0
-          ? `No unit is recorded at position${empty.length > 1 ? 's' : ''} ${list(empty)}: a module wired straight in keeps its full voltage and the string can’t shut down.`
-          : 'Every slot has its unit.',
-      clause: 'As-built record; NEC 690.12',
-      remedy: empty.length > 0 ? 'Read the serials there, or fit the missing units.' : null,
-      alternatives: empty.length > 0 ? ['The unit is there and its serial was not recorded yet.'] : [],
+      words: empty.length > 0 ? said.withoutUnit(empty) : said.allWithUnit,
+      clause: said.withoutUnitClause,
+      remedy: empty.length > 0 ? said.withoutUnitRemedy : null,
+      alternatives: empty.length > 0 ? [said.notRecordedYet] : [],
     },
   ];
   if (foreign.length > 0)
@@ -41,10 +34,14 @@ export function slotFindings({ slots, unit }: Pick<BuiltString, 'slots' | 'unit'
       limit: 0,
       unit: '',
       safety: true,
-      words: `Positions ${list(foreign.map((s) => s.position))} hold ${list([...new Set(foreign.map((s) => s.unitTypeName ?? ''))])}, the string is entered with ${unit.name}. They may start, stop and report differently.`,
-      clause: 'Units’ instructions; common practice: one type in a string',
-      remedy: 'Fit one unit type throughout, or correct the record.',
-      alternatives: ['The serial was read with the wrong type.'],
+      words: said.mixedUnits(
+        foreign.map((s) => s.position),
+        [...new Set(foreign.map((s) => s.unitTypeName ?? ''))],
+        unit.name,
+      ),
+      clause: said.mixedUnitsClause,
+      remedy: said.mixedUnitsRemedy,
+      alternatives: [said.readWrong],
     });
   if (types.size > 1)
     findings.push({
@@ -54,9 +51,9 @@ export function slotFindings({ slots, unit }: Pick<BuiltString, 'slots' | 'unit'
       limit: 100 * MISMATCH,
       unit: '',
       safety: false,
-      words: `${types.size} module types stand in series (${list([...types])}); their currents at maximum power differ by ${figure(Math.round(1000 * spread) / 10, '%')}, and the lowest sets the string’s. It costs energy and is no hazard.`,
-      clause: 'Own rule: 3 % of imp',
-      remedy: spread > MISMATCH ? 'Sort the modules into strings by type.' : null,
+      words: said.mixedModules([...types], figure(Math.round(1000 * spread) / 10, '%')),
+      clause: said.mixedModulesClause,
+      remedy: spread > MISMATCH ? said.mixedModulesRemedy : null,
       alternatives: [],
     });
   return findings;

@@ -1,3 +1,4 @@
+import { unitVoltageSaid as said } from '../../../words/domain-photovoltaics-limits';
 import { checkModuleType } from '../module/datasheet';
 import { wholeWithin } from '../range';
 import { moduleCount, type StringDesign } from './design';
@@ -27,16 +28,13 @@ export function checkStringDesign(design: StringDesign): DesignFinding[] {
       value: cold,
       limit: unit.voltageInMax,
       unit: 'V',
-      clause: 'NEC 690.7(A)(1), unit’s maximum input voltage according to the type entered',
-      within: `One module gives ${figure(cold, 'V')} on the coldest day.`,
-      exceeded: `One module gives ${figure(cold, 'V')} on the coldest day, above the unit’s input limit.`,
-      remedy: 'Choose another unit or module.',
+      clause: said.clause,
+      within: said.within(figure(cold, 'V')),
+      exceeded: said.exceeded(figure(cold, 'V')),
+      remedy: said.remedy,
       certain:
         temperatures.coldest.from === 'estimated'
-          ? {
-              value: Math.max(...modules.map(({ type }) => type.vocRef)),
-              because: 'The temperature is only an estimate from latitude and altitude.',
-            }
+          ? Math.max(...modules.map(({ type }) => type.vocRef))
           : undefined,
     }),
     ...currentFindings(design),

@@ -1,3 +1,9 @@
+import {
+  designFindingSaid,
+  mpptWindowSaid,
+  stringVoltageSaid as said,
+  type VoltageLimitOf,
+} from '../../../words/domain-photovoltaics-limits';
 import { temperatureCellNoct } from '../temperature/cell';
 import { figure, held, type DesignFinding } from './design-finding';
 import { moduleCount, type StringDesign, type Structure } from './design';
@@ -7,22 +13,10 @@ import { coldVoltageFactor, voltageAtTemperature } from './string-sizing';
  * Highest DC voltage of a PV system by where it stands: NEC 690.7. 600 V on one- and two-family dwellings as quoted by
  * others; 1000 V for other buildings and 1500 V elsewhere from memory.
  */
-export const BUILDING_VOLTAGE: Record<Structure, { limit: number; words: string; clause: string }> = {
-  one_or_two_family_dwelling: {
-    limit: 600,
-    words: 'on a one- or two-family dwelling',
-    clause: 'NEC 690.7, one- and two-family dwellings: 600 V',
-  },
-  other_building: {
-    limit: 1000,
-    words: 'on a building',
-    clause: 'NEC 690.7, other buildings: 1000 V (from memory)',
-  },
-  not_on_building: {
-    limit: 1500,
-    words: 'away from buildings',
-    clause: 'NEC 690.7, not on or in buildings: 1500 V (from memory)',
-  },
+export const BUILDING_VOLTAGE: Record<Structure, { limit: number }> = {
+  one_or_two_family_dwelling: { limit: 600 },
+  other_building: { limit: 1000 },
+  not_on_building: { limit: 1500 },
 };
 
 const sum = (values: readonly number[]): number => values.reduce((a, b) => a + b, 0);
@@ -46,7 +40,6 @@ export const moduleVoltageCold = (modules: StringDesign['modules'], coldest: num
   Math.max(...modules.map(({ type }) => voltageAtTemperature(type.vocRef, type.betaVoc, coldest)));
 
 const degrees = (value: number): string => figure(Math.round(value), '°C');
-const estimatedNote = 'The temperature is only an estimate from latitude and altitude.';
 
 /** Cold-day voltage held against everything on the string that has a limit. */
 export function voltageFindings(design: StringDesign): DesignFinding[] {
@@ -56,9 +49,7 @@ export function voltageFindings(design: StringDesign): DesignFinding[] {
   const { byCoefficient, byTable } = stringVoltageCold(modules, coldest);
   const atStc = sum(modules.map(({ type, count }) => count * type.vocRef));
   const each = byCoefficient / n;
-  const day = `On the coldest day (${degrees(coldest)})`;
-  const certain =
-    temperatures.coldest.from === 'estimated' ? { value: atStc, because: estimatedNote } : undefined;
+  const certain = temperatures.coldest.from === 'estimated' ? atStc : undefined;
   if (unit.kind === 'optimizing')
     return [
       {
@@ -68,39 +59,33 @@ export function voltageFindings(design: StringDesign): DesignFinding[] {
         limit: inverter?.voltageMax ?? null,
         unit: 'V',
         safety: true,
-        words: `Optimizing units: the inverter sets the string’s voltage, so ${n} times voc doesn’t apply.`,
-        clause: 'NEC 690.7(B) (in part from memory)',
-        remedy:
-          'Take the shortest and longest string, and the string’s maximum voltage, from the unit maker’s instructions.',
+        words: said.optimizing(n),
+        clause: said.optimizingClause,
+        remedy: said.optimizingRemedy,
         alternatives: [],
       },
     ];
   const against = (
     check: DesignFinding['check'],
+    whose: VoltageLimitOf,
     limit: number | null,
-    whose: string,
-    clause: string,
     remedy: string,
     missing?: string,
   ): DesignFinding => {
     const most = limit === null ? 0 : Math.floor(limit / each + 1e-9);
-    const table =
-      byTable === null
-        ? 'Table 690.7(A) ends at −40 °C.'
-        : `By Table 690.7(A) it would be ${figure(Math.round(byTable), 'V')}${limit !== null && byTable > limit && byCoefficient <= limit ? ', above the limit: the datasheet’s coefficient goes first where it is given' : ''}.`;
+    const table = tableSentence(byTable, limit !== null && byCoefficient <= limit ? limit : Infinity);
+    const gives = [degrees(coldest), n, figure(Math.round(byCoefficient), 'V'), most] as const;
     return held({
       check,
       value: byCoefficient,
       limit,
       unit: 'V',
-      clause,
+      clause: said.clause[whose],
       remedy,
       ...(missing === undefined ? {} : { missing }),
-      within: `${day} ${n} modules give ${figure(Math.round(byCoefficient), 'V')}; ${most} would fit ${whose}. ${table}`,
-      exceeded: `${day} ${n} modules give ${figure(Math.round(byCoefficient), 'V')}; at most ${most} fit ${whose}. ${table}`,
-      alternatives: [
-        'For systems of 100 kW or more NEC 690.7(A)(3) lets a licensed professional electrical engineer document another method.',
-      ],
+      within: `${said.within(whose, ...gives)} ${table}`,
+      exceeded: `${said.exceeded(whose, ...gives)} ${table}`,
+      alternatives: [said.otherMethod],
       certain,
     });
   };
@@ -109,36 +94,27 @@ export function voltageFindings(design: StringDesign): DesignFinding[] {
   return [
     against(
       'string_voltage_inverter',
+      'inverter',
       inverter?.voltageMax ?? null,
-      'the inverter',
-      'NEC 690.7(A)(1), inverter’s maximum DC voltage',
-      inverter
-        ? 'Shorten the string, or choose an inverter for a higher voltage.'
-        : 'Give the inverter its type.',
-      'The inverter has no type, so its highest DC voltage isn’t known.',
+      inverter ? said.shortenForInverter : designFindingSaid.giveInverterType,
+      said.noInverterType,
     ),
     against(
       'string_voltage_building',
+      design.structure,
       building.limit,
-      building.words,
-      building.clause,
-      `Shorten the string to stay at or below ${figure(building.limit, 'V')} ${building.words}.`,
+      said.shortenForBuilding(figure(building.limit, 'V'), design.structure),
     ),
-    against(
-      'string_voltage_module',
-      moduleLimit,
-      'the modules’ system voltage',
-      'NEC 690.7(A)(1), modules’ maximum system voltage (IEC 61730)',
-      'Shorten the string, or choose modules for a higher system voltage.',
-    ),
-    against(
-      'string_voltage_unit',
-      unit.voltageSystemMax,
-      'the units’ system voltage',
-      'NEC 690.7(A)(1), units’ maximum system voltage according to the type entered',
-      'Shorten the string, or choose units for a higher system voltage.',
-    ),
+    against('string_voltage_module', 'module', moduleLimit, said.shortenForModule),
+    against('string_voltage_unit', 'unit', unit.voltageSystemMax, said.shortenForUnit),
   ];
+}
+
+/** What Table 690.7(A) makes of it; said besides where that alone is above `limit`. */
+function tableSentence(byTable: number | null, limit: number): string {
+  if (byTable === null) return said.tableEnds;
+  const voltage = figure(Math.round(byTable), 'V');
+  return byTable > limit ? said.byTableAbove(voltage) : said.byTable(voltage);
 }
 
 /** Voltage at maximum power on the hottest and on the coldest day against the inverter's window. */
@@ -159,9 +135,9 @@ export function windowFindings(design: StringDesign): DesignFinding[] {
   const cell = temperatureCellNoct(1000, hottestAir, modules[0]?.type.noct ?? 45);
   const hot = atCell((noct) => temperatureCellNoct(1000, hottestAir, noct));
   const cold = atCell(() => temperatures.coldest.value);
-  const missing = 'The inverter has no type, so its MPPT window isn’t known.';
   const fewest = inverter ? Math.ceil(inverter.mpptMin / (hot / n) - 1e-9) : 0;
-  const energy = 'It costs energy and is no hazard.';
+  const works = [degrees(hottestAir), degrees(cell), figure(Math.round(hot), 'V'), fewest] as const;
+  const atBest = [degrees(temperatures.coldest.value), figure(Math.round(cold), 'V')] as const;
   return [
     held({
       check: 'mppt_window_hot',
@@ -170,14 +146,14 @@ export function windowFindings(design: StringDesign): DesignFinding[] {
       bound: 'at_least',
       unit: 'V',
       safety: false,
-      clause: 'Inverter’s MPPT window; cell by NOCT (Ross 1981)',
-      missing,
-      remedy: inverter ? `Lengthen the string to ${fewest} modules or more.` : 'Give the inverter its type.',
-      within: `On the hottest day (air ${degrees(hottestAir)}, cells ${degrees(cell)}) the string works at ${figure(Math.round(hot), 'V')}; ${fewest} modules would do.`,
-      exceeded: `On the hottest day (air ${degrees(hottestAir)}, cells ${degrees(cell)}) the string works at ${figure(Math.round(hot), 'V')} and falls out of the window: it needs ${fewest} modules. ${energy}`,
+      clause: mpptWindowSaid.hotClause,
+      missing: mpptWindowSaid.noInverterType,
+      remedy: inverter ? mpptWindowSaid.lengthen(fewest) : designFindingSaid.giveInverterType,
+      within: mpptWindowSaid.hotWithin(...works),
+      exceeded: mpptWindowSaid.hotExceeded(...works),
       certain:
         temperatures.hottest.from === 'estimated'
-          ? { value: atCell((noct) => temperatureCellNoct(1000, 20, noct)), because: estimatedNote }
+          ? atCell((noct) => temperatureCellNoct(1000, 20, noct))
           : undefined,
     }),
     held({
@@ -186,17 +162,12 @@ export function windowFindings(design: StringDesign): DesignFinding[] {
       limit: inverter?.mpptMax ?? null,
       unit: 'V',
       safety: false,
-      clause: 'Inverter’s MPPT window',
-      missing,
-      remedy: inverter
-        ? 'Shorten the string, or choose an inverter with a higher window.'
-        : 'Give the inverter its type.',
-      within: `On the coldest day (${degrees(temperatures.coldest.value)}) the string works at ${figure(Math.round(cold), 'V')} at most.`,
-      exceeded: `On the coldest day (${degrees(temperatures.coldest.value)}) the string would work best at ${figure(Math.round(cold), 'V')}, above the window. ${energy}`,
-      certain:
-        temperatures.coldest.from === 'estimated'
-          ? { value: atCell(() => STC_CELL), because: estimatedNote }
-          : undefined,
+      clause: mpptWindowSaid.coldClause,
+      missing: mpptWindowSaid.noInverterType,
+      remedy: inverter ? mpptWindowSaid.shorten : designFindingSaid.giveInverterType,
+      within: mpptWindowSaid.coldWithin(...atBest),
+      exceeded: mpptWindowSaid.coldExceeded(...atBest),
+      certain: temperatures.coldest.from === 'estimated' ? atCell(() => STC_CELL) : undefined,
     }),
   ];
 }

@@ -1,3 +1,4 @@
+import { datasheetSaid as said } from '../../../words/domain-photovoltaics-module';
 import type { ModuleType } from '../../equipment/module-type';
 import { positive, wholeWithin, within } from '../range';
 import {
@@ -135,18 +136,16 @@ function remarksOn(type: ModuleType, fit: Omit<DatasheetFit, 'remarks' | 'qualit
   const remarks: string[] = [];
   const percent = (part: number) => `${(100 * part).toFixed(1)} %`;
   if (Math.abs(fit.vmp) > 0.005 || Math.abs(fit.imp) > 0.005) {
-    remarks.push(`vmp and imp can't both be met: off by ${percent(fit.vmp)} and ${percent(fit.imp)}`);
+    remarks.push(said.maximumPowerPoint(percent(fit.vmp), percent(fit.imp)));
   }
   if (Math.abs(fit.betaVoc) > 0.05) {
-    remarks.push(`betaVoc can't be met with a silicon junction: off by ${percent(fit.betaVoc)}`);
+    remarks.push(said.betaVoc(percent(fit.betaVoc)));
   }
   if (Math.abs(fit.gammaPmp) > 0.15) {
-    remarks.push(`gammaPmp that follows differs by ${percent(fit.gammaPmp)}: check the coefficients`);
+    remarks.push(said.gammaPmp(percent(fit.gammaPmp)));
   }
   if (fit.ideality < 0.8 || fit.ideality > 1.6) {
-    remarks.push(
-      `ideality ${fit.ideality.toFixed(2)} is unusual for ${type.cellsInSeries} silicon cells: check the cell count`,
-    );
+    remarks.push(said.ideality(fit.ideality.toFixed(2), type.cellsInSeries));
   }
   return remarks;
 }
