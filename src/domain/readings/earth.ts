@@ -1,3 +1,4 @@
+import { earthSaid as said } from '../../words/domain-readings';
 import type { ReadingQuestion } from './reading';
 
 /** Readings to earth: is a conductor of the string in contact with it, and where? */
@@ -45,7 +46,7 @@ export function earthFinding(
       probability: PRIOR,
       between: null,
       placeProbability: 0,
-      words: 'The string shows too little voltage to tell anything about earth.',
+      words: said.tooLittle,
     };
   const sign = voltageV < 0 ? -1 : 1;
   const positive = earth.positiveV === null ? null : sign * earth.positiveV;
@@ -84,12 +85,7 @@ export function earthFinding(
       probability,
       between: null,
       placeProbability: 0,
-      words:
-        outcome === 'no_fault_seen'
-          ? 'To earth the string floats: no fault seen. That is no insulation test.'
-          : taken
-            ? 'The readings to earth fit neither a sound string nor a clear fault: take both again, and wait until they settle.'
-            : 'One reading to earth is not enough: take both, + to earth and − to earth.',
+      words: outcome === 'no_fault_seen' ? said.floats : taken ? said.neither : said.takeBoth,
     };
   const place: [number, number] = reversedPlace(k, n, voltageV);
   const sure = alike && placeProbability >= 0.5;
@@ -98,9 +94,7 @@ export function earthFinding(
     probability,
     between: sure ? place : null,
     placeProbability: alike ? placeProbability : 0,
-    words: sure
-      ? `A conductor touches earth ${wordsAt(place[0], n)}. Do not connect the string.`
-      : `A conductor of the string touches earth; the place can not be told${alike ? '' : ', for its modules do not all give the same voltage'}. Do not connect the string.`,
+    words: sure ? said.faultAt(place[0], n) : alike ? said.fault : said.faultUnlike,
   };
 }
 
@@ -126,10 +120,3 @@ const reversedPlace = (k: number, n: number, voltageV: number): [number, number]
   const from = voltageV < 0 ? n - k : k;
   return [from, Math.min(n, from + 1)];
 };
-
-const wordsAt = (from: number, n: number): string =>
-  from === 0
-    ? 'at the negative end, before position 1'
-    : from === n
-      ? `at the positive end, after position ${n}`
-      : `between positions ${from} and ${from + 1}`;

@@ -1,3 +1,4 @@
+import { interpretationSaid } from '../../words/domain-readings';
 import { earthFinding, type EarthFinding } from './earth';
 import { posteriorOf, type Posterior } from './posterior';
 import { expectedState, type HypothesisKind, type ReadingQuestion } from './reading';
@@ -79,9 +80,7 @@ export function interpretReading(question: ReadingQuestion): Interpretation {
   const deaf = state.unheardPassing;
   return {
     outcome,
-    headline: told
-      ? best.words
-      : `Can't tell: ${ranked[0]!.words.toLowerCase()}, or ${ranked[1]!.words.toLowerCase()}`,
+    headline: told ? best.words : interpretationSaid.cantTell(ranked[0]!.words, ranked[1]!.words),
     expected: state.words,
     hypotheses: ranked.filter((h) => h.probability >= 0.001 || h.asExpected),
     likely,

@@ -1,3 +1,4 @@
+import { expectedStateSaid as said } from '../../words/domain-readings';
 import type { ModuleType } from '../equipment/module-type';
 import type { UnitType } from '../equipment/unit-type';
 
@@ -92,14 +93,12 @@ export interface ExpectedState {
 export function expectedState(question: ReadingQuestion): ExpectedState {
   const { units, unitType, commanded } = question;
   if (unitType.kind === 'shutdown_only') {
-    if (commanded === 'released')
-      return { passing: units, unheardPassing: 0, words: 'keep-alive is present: every unit passes' };
+    if (commanded === 'released') return { passing: units, unheardPassing: 0, words: said.keepAlive };
     const passing = unitType.outOfBox === 'passing' && commanded === 'unknown' ? units : 0;
     return {
       passing,
       unheardPassing: passing,
-      words:
-        passing > 0 ? 'out of the box every unit passes' : 'without keep-alive every unit is in shutdown',
+      words: passing > 0 ? said.outOfTheBox : said.noKeepAlive,
     };
   }
   const heard = Math.min(units, Math.max(0, question.heard));
@@ -109,17 +108,11 @@ export function expectedState(question: ReadingQuestion): ExpectedState {
     return {
       passing: unheardPassing,
       unheardPassing,
-      words:
-        unheardPassing > 0
-          ? `${heard} units were heard and are in shutdown; ${unheardPassing} were not heard and pass full voltage`
-          : 'every unit was heard and is in shutdown',
+      words: unheardPassing > 0 ? said.someUnheardInShutdown(heard, unheardPassing) : said.allInShutdown,
     };
   return {
     passing: heard + unheardPassing,
     unheardPassing,
-    words:
-      unheardPassing > 0
-        ? `${unheardPassing} units were not heard yet and pass full voltage`
-        : 'every unit is released and passes',
+    words: unheardPassing > 0 ? said.someUnheard(unheardPassing) : said.allReleased,
   };
 }
