@@ -1,3 +1,5 @@
+import { passwordSaid as said } from '../../words/domain-access';
+
 /** What a password must be: long, and none that everybody tries first. No rules of composition (NIST SP 800-63B, 5.1.1.2). */
 
 export const PASSWORD_MIN = 12;
@@ -15,14 +17,12 @@ export function passwordFault(
   isCommon: (word: string) => boolean,
 ): string | null {
   const length = [...password].length;
-  if (length < PASSWORD_MIN) return `Use at least ${PASSWORD_MIN} characters: three or four words do well.`;
-  if (length > PASSWORD_MAX) return `Use at most ${PASSWORD_MAX} characters.`;
+  if (length < PASSWORD_MIN) return said.tooShort(PASSWORD_MIN);
+  if (length > PASSWORD_MAX) return said.tooLong(PASSWORD_MAX);
   const words = plain(password);
-  if (new Set(words).size < 5) return 'Too few different characters: it would be guessed at once.';
-  if (isCommon(words) || isCommon(words.replace(/[^a-z]+$/, '')))
-    return 'This one is among the passwords that are tried first. Choose another.';
+  if (new Set(words).size < 5) return said.tooPlain;
+  if (isCommon(words) || isCommon(words.replace(/[^a-z]+$/, ''))) return said.common;
   const own = [about.email, about.email.split('@')[0] ?? '', about.name, 'wakeline'].map(plain);
-  if (own.some((part) => part.length > 3 && words.replaceAll(part, '').length < 6))
-    return 'It is made of your own name or address. Choose another.';
+  if (own.some((part) => part.length > 3 && words.replaceAll(part, '').length < 6)) return said.own;
   return null;
 }

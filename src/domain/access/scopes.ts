@@ -1,3 +1,4 @@
+import { scopeTexts } from '../../words/domain-access';
 import { mayUse, type Permission, type Role } from './permissions';
 
 /**
@@ -16,16 +17,7 @@ export const TOKEN_SCOPES = [
 ] as const;
 export type TokenScope = (typeof TOKEN_SCOPES)[number];
 
-export const SCOPE_WORDS: Record<TokenScope, string> = {
-  'sites:read': 'Sites and strings, with what they make now',
-  'units:read': 'Units: where they are, how they are, what is wrong and why',
-  'events:read': 'Events, as they happen, and notes on the time axis',
-  'telemetry:read': 'Readings: minutes, quarters of an hour, days',
-  'commissioning:read': 'Roll calls and shutdown tests',
-  'cases:read': 'Cases, with who works on them and what was found',
-  'loggers:read': 'Loggers and when they last spoke',
-  write: 'Write: acknowledge hazards, record meter readings, open cases, pin notes',
-};
+export const SCOPE_WORDS: Record<TokenScope, string> = scopeTexts;
 
 /** Why a token may not: its scopes lack it, or its person's role does. */
 export type TokenRefusal = 'scope' | 'role';

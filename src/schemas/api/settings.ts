@@ -3,6 +3,7 @@ import { THRESHOLD_KEYS, THRESHOLDS, type ThresholdKey } from '../../domain/sett
 import { typedNumber } from '../typed-number';
 import { CURRENCIES } from '../lists-and-limits';
 import { settingFields } from '../../words/fields';
+import { thresholdUnits } from '../../words/domain-settings';
 
 /** What an organisation sets for itself. */
 
@@ -65,7 +66,7 @@ export const thresholdsBody = z
         min: Number((facts.min * scale).toFixed(6)),
         max: Number((facts.max * scale).toFixed(6)),
         whole: facts.whole,
-        unit: facts.unit === 'days' ? '' : facts.unit,
+        unit: facts.unit === thresholdUnits.days ? '' : facts.unit,
       });
       if (value === null) context.addIssue({ code: 'custom', message: fault, path: [facts.key] });
       else if (facts.initial === null || Math.abs(value / scale - facts.initial) > 1e-9)
