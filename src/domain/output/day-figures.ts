@@ -1,3 +1,4 @@
+import { lossStepLabels } from '../../words/domain-losses';
 import { yearBefore } from './period';
 
 /** Yields and ratios of any span from sums of its days, by IEC 61724-1 as `yields` has them from records. */
@@ -189,13 +190,17 @@ export function lossSteps(days: readonly DaySums[], named: readonly NamedLoss[])
   const causes = named.filter((n) => n.kWh > 0);
   const rest = light - temperature - grid - stopped - sum(causes, (n) => n.kWh) - made;
   return [
-    { key: 'light', label: 'Light at rated power', kWh: light },
-    { key: 'temperature', label: temperature >= 0 ? 'Warm modules' : 'Cold modules', kWh: temperature },
-    { key: 'grid', label: 'Grid gone', kWh: grid },
-    { key: 'stopped', label: 'Inverter not running', kWh: stopped },
+    { key: 'light', label: lossStepLabels.light, kWh: light },
+    {
+      key: 'temperature',
+      label: temperature >= 0 ? lossStepLabels.warm : lossStepLabels.cold,
+      kWh: temperature,
+    },
+    { key: 'grid', label: lossStepLabels.grid, kWh: grid },
+    { key: 'stopped', label: lossStepLabels.stopped, kWh: stopped },
     ...causes.map((n): LossStep => ({ key: 'named', label: n.label, kWh: n.kWh })),
-    { key: 'rest', label: 'Dirt, shade, wiring, conversion', kWh: rest },
-    { key: 'made', label: 'Went out as AC', kWh: made },
+    { key: 'rest', label: lossStepLabels.rest, kWh: rest },
+    { key: 'made', label: lossStepLabels.made, kWh: made },
   ];
 }
 

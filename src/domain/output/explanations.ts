@@ -1,3 +1,9 @@
+import {
+  explanationFigures as figure,
+  explanationSaid as said,
+  explanationTitles,
+} from '../../words/domain-explanations';
+import { loopComparedWith } from '../../words/domain-loop';
 import type { LoopFinding } from './resistance';
 import type { Signature } from './signature';
 import type { WeakUnit } from './weak-unit';
@@ -37,14 +43,12 @@ export interface ExplanationInput {
 
 /** How far a ratio may be off and still count as unchanged: as the signature has it. */
 const UNCHANGED = 0.03;
-const ratio = (x: number | null): string => (x === null ? 'not known' : x.toFixed(3));
+const ratio = (x: number | null): string => (x === null ? figure.notKnown : x.toFixed(3));
 /** Two decimals, a real minus, no minus before nothing. */
 const signed = (x: number): string => {
   const text = Math.abs(x).toFixed(2);
   return x < 0 && Number(text) !== 0 ? `−${text}` : text;
 };
-const list = (positions: readonly number[]): string =>
-  positions.length === 1 ? `position ${positions[0]}` : `positions ${positions.join(', ')}`;
 
 /** The likeliest first: what fits, then what fits partly, what can't be told, what doesn't. */
 const RANK: Record<Explanation['fit'], number> = { fits: 0, partly: 1, cant_tell: 2, does_not: 3 };
@@ -88,24 +92,24 @@ function unitsMissing(input: ExplanationInput): Explanation {
   if (f && f.modulesMissing !== null)
     figures.push(
       {
-        name: 'voltage missing, in modules',
+        name: figure.voltageMissing,
         measured: f.modulesMissing.toFixed(2),
-        would: 'a whole number',
+        would: figure.wholeNumber,
       },
-      { name: 'current over the others’', measured: ratio(f.currentRatio), would: '1.000' },
+      { name: figure.currentOverTheOthers, measured: ratio(f.currentRatio), would: '1.000' },
     );
   const fit = held.length > 0 ? 'fits' : found.fit;
   return {
     key: 'units_missing',
-    title: 'Units in shutdown, or modules not mated',
+    title: explanationTitles.units_missing,
     ...found,
     fit,
     words:
       held.length > 0
-        ? `${held.length} of ${units} units say themselves that they are in shutdown: ${list(held)}.`
+        ? said.sayItThemselves(held, units)
         : count !== null
-          ? `The voltage of ${count} of ${units} modules is missing and the current is right.`
-          : 'The voltage of whole modules would be missing, with the current unchanged.',
+          ? said.voltageMissing(count, units)
+          : said.voltageWouldBeMissing,
     figures,
   };
 }
@@ -116,30 +120,24 @@ function bypassed(input: ExplanationInput): Explanation {
   const found = bySignature(input, 'bypassed_substring');
   const f = signature?.figures;
   const figures = own.map((w) => ({
-    name: `position ${w.unit + 1} over its neighbours`,
+    name: figure.positionOverNeighbours(w.unit + 1),
     measured: w.ratio.toFixed(3),
-    would: Array.from({ length: bypassGroups - 1 }, (_, i) => ((i + 1) / bypassGroups).toFixed(3)).join(
-      ' or ',
+    would: figure.oneOf(
+      Array.from({ length: bypassGroups - 1 }, (_, i) => ((i + 1) / bypassGroups).toFixed(3)),
     ),
   }));
   if (f && f.modulesMissing !== null)
     figures.push({
-      name: 'voltage missing, in modules',
+      name: figure.voltageMissing,
       measured: f.modulesMissing.toFixed(2),
       would: (1 / bypassGroups).toFixed(2),
     });
   return {
     key: 'bypassed_substring',
-    title: 'Bypassed cells in a module',
+    title: explanationTitles.bypassed_substring,
     fit: own.length > 0 ? 'fits' : found.fit,
     confidence: own[0]?.confidence ?? found.confidence,
-    words:
-      own.length > 0
-        ? `${own.map((w) => w.words).join('. ')}.`
-        : 'One part in three of one module’s voltage would be missing, all day, with the current unchanged.'.replace(
-            'One part in three',
-            `One part in ${bypassGroups}`,
-          ),
+    words: own.length > 0 ? said.ofUnits(own.map((w) => w.words)) : said.partWouldBeMissing(bypassGroups),
     figures,
   };
 }
@@ -150,23 +148,23 @@ function shade(input: ExplanationInput): Explanation {
   const found = bySignature(input, 'shade');
   return {
     key: 'shade',
-    title: 'Shade',
+    title: explanationTitles.shade,
     fit: found.fit === 'fits' ? 'fits' : partOfDay.length > 0 ? 'partly' : found.fit,
     confidence: found.confidence,
     words:
       azimuth !== null
-        ? 'It is low day after day while the sun stands in the same part of the sky, and well elsewhere.'
+        ? said.shade
         : partOfDay.length > 0
-          ? `Low for part of the day: ${list(partOfDay.map((w) => w.unit + 1))}.`
-          : 'It would be low at the same positions of the sun, day after day, and well elsewhere.',
+          ? said.lowForPartOfTheDay(partOfDay.map((w) => w.unit + 1))
+          : said.shadeWouldBe,
     figures:
       azimuth === null
         ? []
         : [
             {
-              name: 'low while the sun’s azimuth is',
-              measured: `${azimuth[0]}° to ${azimuth[1]}°`,
-              would: 'one stretch',
+              name: figure.lowWhileAzimuth,
+              measured: figure.degrees(azimuth[0], azimuth[1]),
+              would: figure.oneStretch,
             },
           ],
   };
@@ -177,23 +175,19 @@ function soiling(input: ExplanationInput): Explanation {
   const found = bySignature(input, 'soiling');
   return {
     key: 'soiling',
-    title: 'Dirt',
+    title: explanationTitles.soiling,
     ...found,
     fit: input.signature !== null && perDay === null ? 'cant_tell' : found.fit,
     words:
-      found.fit === 'fits'
-        ? 'It fell day by day and came back with the rain.'
-        : perDay === null
-          ? 'It would fall day by day and come back with rain; ten judged days are needed to see it.'
-          : 'It would fall day by day and come back with rain.',
+      found.fit === 'fits' ? said.soiling : perDay === null ? said.soilingTooFewDays : said.soilingWouldBe,
     figures:
       perDay === null
         ? []
         : [
             {
-              name: 'change of the ratio a day',
+              name: figure.changeADay,
               measured: `${perDay > 0 ? '+' : '−'}${(100 * Math.abs(perDay)).toFixed(2)} %`,
-              would: 'under −0.10 %',
+              would: figure.under('−0.10 %'),
             },
           ],
   };
@@ -203,17 +197,17 @@ function currentLow(input: ExplanationInput): Explanation {
   const f = input.signature?.figures;
   return {
     key: 'current_low',
-    title: 'Too little current, voltage right',
+    title: explanationTitles.current_low,
     ...bySignature(input, 'current_low'),
-    words: 'Even dirt, modules of another kind, or a string of the input that carries nothing.',
+    words: said.currentLow,
     figures: f
       ? [
           {
-            name: 'current over the others’',
+            name: figure.currentOverTheOthers,
             measured: ratio(f.currentRatio),
-            would: `under ${(1 - UNCHANGED).toFixed(2)}`,
+            would: figure.under((1 - UNCHANGED).toFixed(2)),
           },
-          { name: 'voltage over the others’', measured: ratio(f.voltageRatio), would: '1.000' },
+          { name: figure.voltageOverTheOthers, measured: ratio(f.voltageRatio), would: '1.000' },
         ]
       : [],
   };
@@ -223,17 +217,17 @@ function resistance({ loop }: ExplanationInput): Explanation {
   const found = loop?.outcome === 'excess' || loop?.outcome === 'growing';
   return {
     key: 'loop_resistance',
-    title: 'A connector or lead going bad',
+    title: explanationTitles.loop_resistance,
     fit: loop === null || loop.outcome === 'cant_tell' ? 'cant_tell' : found ? 'fits' : 'does_not',
     confidence: found ? loop.confidence : null,
-    words: loop?.words ?? 'The units’ outputs or the input’s voltage are not measured here.',
+    words: loop?.words ?? said.loopNotMeasured,
     figures:
       loop?.fit && loop.above
         ? [
             {
-              name: `resistance over that of ${loop.above.comparedWith}`,
-              measured: `${signed(loop.above.ohm)} Ω (${signed(loop.above.low)} to ${signed(loop.above.high)})`,
-              would: `over ${loop.threshold.ohm.toFixed(1)} Ω`,
+              name: figure.resistanceOver(loopComparedWith[loop.above.comparedWith]),
+              measured: figure.ohm(signed(loop.above.ohm), signed(loop.above.low), signed(loop.above.high)),
+              would: figure.over(`${loop.threshold.ohm.toFixed(1)} Ω`),
             },
           ]
         : [],
@@ -244,19 +238,19 @@ function weakModule({ weak }: ExplanationInput): Explanation {
   const own = weak?.filter((w) => w.kind === 'low') ?? [];
   return {
     key: 'weak_unit',
-    title: 'A weak module',
+    title: explanationTitles.weak_unit,
     fit: weak === null ? 'cant_tell' : own.length > 0 ? 'fits' : 'does_not',
     confidence: own[0]?.confidence ?? null,
     words:
       weak === null
-        ? 'Too little load, or too few units that tell their voltage, to compare them.'
+        ? said.tooLittleToCompare
         : own.length > 0
-          ? `${own.map((w) => w.words).join('. ')}.`
-          : 'No unit stays under its neighbours’ voltage.',
+          ? said.ofUnits(own.map((w) => w.words))
+          : said.noneUnderItsNeighbours,
     figures: own.map((w) => ({
-      name: `position ${w.unit + 1} over its neighbours`,
+      name: figure.positionOverNeighbours(w.unit + 1),
       measured: w.ratio.toFixed(3),
-      would: `under ${w.threshold.ratio.toFixed(3)}`,
+      would: figure.under(w.threshold.ratio.toFixed(3)),
     })),
   };
 }

@@ -1,4 +1,5 @@
-import { dayAfter, monthName, periodOf } from './period';
+import { periodLabels } from '../../words/domain-periods';
+import { dayAfter, periodOf } from './period';
 
 /** What a weekly or monthly letter is about: the newest week (Monday to Sunday) or month that is over. */
 export const EVERY = ['week', 'month'] as const;
@@ -14,7 +15,10 @@ export interface LetterPeriod {
 
 /** 0: Monday */
 const weekday = (day: string): number => (new Date(`${day}T12:00:00Z`).getUTCDay() + 6) % 7;
-const dayWords = (day: string): string => `${Number(day.slice(8))} ${monthName(Number(day.slice(5, 7)))}`;
+const dayAndMonth = (day: string): [day: number, month: number] => [
+  Number(day.slice(8)),
+  Number(day.slice(5, 7)),
+];
 
 /** @param today yyyy-mm-dd on the calendar at the site */
 export function lastPeriod(every: Every, today: string): LetterPeriod {
@@ -29,6 +33,6 @@ export function lastPeriod(every: Every, today: string): LetterPeriod {
     key: from,
     from,
     before,
-    label: `the week from ${dayWords(from)} to ${dayWords(dayAfter(from, 6))}`,
+    label: periodLabels.week(...dayAndMonth(from), ...dayAndMonth(dayAfter(from, 6))),
   };
 }

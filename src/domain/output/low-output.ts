@@ -1,3 +1,4 @@
+import { lowOutputSaid } from '../../words/domain-low-output';
 import { EXCLUDED, type PlaneReference, type PlaneSeries, type StringSeries } from './plane-reference';
 import { median } from './robust';
 import { signatureOf, type Signature } from './signature';
@@ -83,8 +84,8 @@ export function judgeOutput(
       z: bySiblings ? -Z_LIMIT : null,
       ratio: limit,
       source: bySiblings
-        ? `modified z-score of −3.5 (Iglewicz & Hoaglin 1993) and ${Math.round(lossMin * 100)} % (${lossMin === LOSS_MIN ? 'IEC 62446-1' : 'set by the organisation'}), on ${daysLow} of 5 days`
-        : `model: 3.5 standard deviations of what is usual, on ${daysLow} of 5 days`,
+        ? lowOutputSaid.sourceSiblings(lossMin, lossMin === LOSS_MIN, daysLow)
+        : lowOutputSaid.sourceModel(daysLow),
     },
     excluded: countExcluded(plane, s),
   };
@@ -94,7 +95,7 @@ export function judgeOutput(
       ...base,
       ...none,
       outcome: 'cant_tell',
-      words: `${s.name}: ${looked.length} days with enough sun left to compare, ${daysLow} are needed`,
+      words: lowOutputSaid.tooFewDays(s.name, looked.length, daysLow),
       confidence: 0,
     };
   if (low.length < daysLow)
@@ -104,8 +105,8 @@ export function judgeOutput(
       outcome: 'as_expected',
       words:
         low.length === 0
-          ? `${s.name} makes what it should`
-          : `${s.name} was low on ${low.length} of ${looked.length} days; ${daysLow} make a finding`,
+          ? lowOutputSaid.makesWhatItShould(s.name)
+          : lowOutputSaid.lowOnTooFew(s.name, low.length, looked.length, daysLow),
       confidence: low.length === 0 ? 0.95 : 0.8,
     };
 
@@ -121,7 +122,7 @@ export function judgeOutput(
   return {
     ...base,
     outcome: 'low',
-    words: `${s.name} makes ${Math.round(100 * share)} % less than ${bySiblings ? 'the strings of its plane' : 'its modules should'}: ${signature.words}`,
+    words: lowOutputSaid.makesLess(s.name, share, bySiblings, signature.words),
     loss: { share, low: Math.max(0, share - half), high: share + half },
     lossKWh,
     lossMoney:

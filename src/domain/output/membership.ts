@@ -1,3 +1,4 @@
+import { membershipSaid } from '../../words/domain-membership';
 import { median, sigmaMad } from './robust';
 
 /**
@@ -54,9 +55,6 @@ const INDEPENDENT = 0.4;
 /** Deviations are cut off here: one wild report doesn't decide. */
 const Z_MAX = 3;
 
-export const DECISIVE_METHOD =
-  "Decisive: a qualified person isolates one string by the site's procedure, and whose current goes to zero?";
-
 /**
  * Judges every unit of every string. `cant_tell` where no string runs, too few samples are left, or the strings'
  * currents differ by less than the accuracy can part.
@@ -87,11 +85,7 @@ export function judgeMembership(strings: readonly MemberString[], options: Membe
         words,
         ...more,
       });
-      if (usable.length < SAMPLES_MIN)
-        return made(
-          'cant_tell',
-          'Too few samples with current: before the inverter runs this can not be told.',
-        );
+      if (usable.length < SAMPLES_MIN) return made('cant_tell', membershipSaid.tooFewSamples);
       const mine = usable.map((k) => Math.log(current[chosen[k]!]!));
       const likely = logs.map((log) =>
         likelihood(
@@ -111,33 +105,27 @@ export function judgeMembership(strings: readonly MemberString[], options: Membe
         const other = strings[best.i]!.name;
         const second = rivals[1];
         if (second !== undefined && best.odds - second.odds < Math.log(20))
-          return made(
-            'cant_tell',
-            `It does not carry the current of ${s.name}; ${other} and ${strings[second.i]!.name} fit alike. ${DECISIVE_METHOD}`,
-            { logOdds: best.odds, undecidedWith: [other, strings[second.i]!.name] },
-          );
-        return made('elsewhere', `It carries the current of ${other}, not of ${s.name}. ${DECISIVE_METHOD}`, {
+          return made('cant_tell', membershipSaid.twoFit(s.name, other, strings[second.i]!.name), {
+            logOdds: best.odds,
+            undecidedWith: [other, strings[second.i]!.name],
+          });
+        return made('elsewhere', membershipSaid.elsewhere(s.name, other), {
           otherString: other,
           logOdds: best.odds,
           undecidedWith,
         });
       }
       if (likely[own]! < worstFit)
-        return made(
-          'fits_none',
-          'Its current is that of no string of this site: its measurement may be wrong.',
-          {
-            logOdds: best?.odds ?? 0,
-            undecidedWith,
-          },
-        );
+        return made('fits_none', membershipSaid.fitsNone, {
+          logOdds: best?.odds ?? 0,
+          undecidedWith,
+        });
       if (undecidedWith.length > 0)
-        return made(
-          'cant_tell',
-          `Its current fits ${s.name}, and its accuracy can't part it from ${undecidedWith.slice(0, 3).join(', ')}.`,
-          { logOdds: best?.odds ?? 0, undecidedWith },
-        );
-      return made('here', `It carries the current of ${s.name}.`, { logOdds: best?.odds ?? 0 });
+        return made('cant_tell', membershipSaid.notParted(s.name, undecidedWith.slice(0, 3)), {
+          logOdds: best?.odds ?? 0,
+          undecidedWith,
+        });
+      return made('here', membershipSaid.here(s.name), { logOdds: best?.odds ?? 0 });
     }),
   );
 }

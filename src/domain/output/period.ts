@@ -1,3 +1,5 @@
+import { periodLabels } from '../../words/domain-periods';
+
 /** A month or a year of calendar days, as figures are asked for. Days are yyyy-mm-dd of the site's own calendar. */
 export interface Period {
   kind: 'month' | 'year';
@@ -12,22 +14,6 @@ export interface Period {
   /** The same period of the year before. */
   yearBefore: string;
 }
-
-const MONTHS = [
-  'January',
-  'February',
-  'March',
-  'April',
-  'May',
-  'June',
-  'July',
-  'August',
-  'September',
-  'October',
-  'November',
-  'December',
-];
-export const monthName = (month: number): string => MONTHS[month - 1] ?? '';
 
 const two = (n: number): string => String(n).padStart(2, '0');
 
@@ -57,7 +43,7 @@ export function periodOf(key: string): Period | null {
     key,
     from: `${key}-01`,
     before: `${keyAt(1)}-01`,
-    label: `${monthName(month)} ${year}`,
+    label: periodLabels.month(month, year),
     previous: keyAt(-1),
     next: keyAt(1),
     yearBefore: keyAt(-12),

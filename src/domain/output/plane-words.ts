@@ -1,3 +1,4 @@
-/** "South roof" → "south roof", in the middle of a sentence; "PV2" stays. */
-export const planeWords = (name: string): string =>
-  /^[A-Z][a-z]/.test(name) ? name.charAt(0).toLowerCase() + name.slice(1) : name;
+import { planeWithin } from '../../words/domain-planes';
+
+/** A plane's name in the middle of a sentence. */
+export const planeWords = planeWithin;

@@ -1,3 +1,4 @@
+import { loopCouldBe, loopFitSaid, loopSaid } from '../../words/domain-loop';
 import { median, sigmaMad } from './robust';
 import { theilSen } from './theil-sen';
 
@@ -35,6 +36,9 @@ export interface LoopFit {
   highestA: number;
 }
 
+/** What a loop is held against. Stored: none is renamed. */
+export type LoopComparedWith = 'its past' | 'other strings' | 'its cables';
+
 export interface LoopFinding {
   outcome: 'usual' | 'excess' | 'growing' | 'cant_tell';
   words: string;
@@ -44,7 +48,7 @@ export interface LoopFinding {
     ohm: number;
     low: number;
     high: number;
-    comparedWith: 'its past' | 'other strings' | 'its cables';
+    comparedWith: LoopComparedWith;
   } | null;
   /** Heat where it sits, at the highest current seen: P = I²R, W. */
   heatW: number | null;
@@ -179,13 +183,12 @@ function offOf(samples: readonly LoopSample[]): number[] | null {
 /** The robust fit (Theil–Sen by turns on residuals), or why there is none. */
 export function fitLoop(samples: readonly LoopSample[]): LoopFit | string {
   const usable = ofOneMoment(samples);
-  if (usable.length < SAMPLES_MIN)
-    return `${usable.length} steady samples with current, ${SAMPLES_MIN} are needed`;
+  if (usable.length < SAMPLES_MIN) return loopFitSaid.tooFewSamples(usable.length, SAMPLES_MIN);
   const points = pointsOf(usable, warmingOf(samples));
   const own = points.map((p) => p.ownA);
   const highestA = Math.max(...usable.map((s) => s.ownA));
   const span = highestA - Math.min(...own);
-  if (span < SPAN_MIN) return `the current spans ${span.toFixed(1)} A only, ${SPAN_MIN} A are needed`;
+  if (span < SPAN_MIN) return loopFitSaid.tooNarrow(span, SPAN_MIN);
   const volts = points.map((p) => p.volts);
   const centreV = median(volts);
   const gap = points.map((p) => p.gap);
@@ -292,15 +295,12 @@ export function judgeLoop(
 ): LoopFinding {
   const threshold = {
     ohm: excessOhm,
-    source:
-      excessOhm === EXCESS_OHM
-        ? 'P = I²R: 10 W in one place at 10 A, from experience'
-        : 'P = I²R; set by the organisation',
+    source: excessOhm === EXCESS_OHM ? loopSaid.source : loopSaid.sourceOrganisation,
   };
   if (typeof fit === 'string')
     return {
       outcome: 'cant_tell',
-      words: `The loop's resistance can not be told: ${fit}.`,
+      words: loopSaid.cantTell(fit),
       fit: null,
       above: null,
       heatW: null,
@@ -341,10 +341,10 @@ export function judgeLoop(
     threshold: { ...threshold, ohm: limit },
     couldBe: found
       ? [
-          'a connector going bad or mismated',
-          'a damaged lead',
-          ...(byPast ? [] : ['longer cables than assumed']),
-          'a shift in the calibration of the input',
+          loopCouldBe.connector,
+          loopCouldBe.lead,
+          ...(byPast ? [] : [loopCouldBe.longerCables]),
+          loopCouldBe.calibration,
         ]
       : [],
     confidence,
@@ -352,18 +352,9 @@ export function judgeLoop(
   if (found)
     return made(
       byPast ? 'growing' : 'excess',
-      `${ohm.toFixed(2)} Ω more than ${above.comparedWith}: up to ${heatW!.toFixed(0)} W of heat in one place at ${fit.highestA.toFixed(1)} A. Connectors on the module side lie outside this measurement.`,
+      loopSaid.more(ohm, above.comparedWith, fit.highestA ** 2 * ohm, fit.highestA),
       byPast ? 0.9 : bySiblings ? 0.85 : 0.6,
     );
-  if (ohm + wide > 2 * limit)
-    return made(
-      'cant_tell',
-      `The loop's resistance is known to ±${wide.toFixed(2)} Ω only: ${(2 * limit).toFixed(1)} Ω too many can't be ruled out.`,
-      0,
-    );
-  return made(
-    'usual',
-    'Nothing unusual between the units and the input. Connectors on the module side lie outside this measurement: no finding is not proof.',
-    0.85,
-  );
+  if (ohm + wide > 2 * limit) return made('cant_tell', loopSaid.tooWide(wide, 2 * limit), 0);
+  return made('usual', loopSaid.usual, 0.85);
 }

@@ -1,3 +1,4 @@
+import { signatureCouldBe as couldBe, signatureSaid as said } from '../../words/domain-low-output';
 import type { PlaneReference, PlaneSeries } from './plane-reference';
 import { median, quantile } from './robust';
 
@@ -84,26 +85,16 @@ export function signatureOf(
     kind: SignatureKind,
     words: string,
     confidence: number,
-    couldBe: string[],
+    could: readonly string[],
     count: number | null = null,
-  ): Signature => ({ kind, words, count, figures, confidence, couldBe });
+  ): Signature => ({ kind, words, count, figures, confidence, couldBe: [...could] });
 
   if (powers.length > 0 && median(powers) < NOTHING)
-    return made('current_low', 'it carries no current at all', 0.85, [
-      'its load-break device is open',
-      'a fuse has blown',
-      'a connector or a lead is open',
-      'its inverter input is switched off',
-    ]);
+    return made('current_low', said.noCurrent, 0.85, couldBe.noCurrent);
   const shade = shadeOf(bins, powers, plane, s.power, s.powerRef, reference.specific, low);
   if (shade !== null) {
     figures.shadeAzimuth = shade;
-    return made(
-      'shade',
-      `it is low whenever the sun stands between ${shade[0]}° and ${shade[1]}°: shade`,
-      0.85,
-      ['dirt or snow that covers some modules in that light'],
-    );
+    return made('shade', said.shade(...shade), 0.85, couldBe.shade);
   }
   const currentRight = currentRatio !== null && Math.abs(1 - currentRatio) <= UNCHANGED;
   if (modulesMissing !== null && currentRight && modulesMissing > 0.2) {
@@ -115,48 +106,18 @@ export function signatureOf(
     const offGroup = Math.abs(modulesMissing - bypassed / groups);
     const near = 0.5 / groups;
     if (whole >= 1 && offWhole <= near && (bypassed % groups === 0 || offWhole < offGroup))
-      return made(
-        'units_missing',
-        `the voltage of ${whole} of ${s.units} modules is missing and the current is right: ${whole === 1 ? 'a unit' : 'units'} in shutdown or not mated`,
-        0.85,
-        [
-          'a unit stuck in shutdown',
-          'a module not mated to its unit',
-          'fewer modules than the as-built says',
-        ],
-        whole,
-      );
+      return made('units_missing', said.unitsMissing(whole, s.units), 0.85, couldBe.unitsMissing, whole);
     if (bypassed >= 1 && offGroup <= near)
-      return made(
-        'bypassed_substring',
-        `${bypassed === 1 ? 'a third' : `${bypassed} thirds`} of one module's voltage is missing and the current is right: bypassed cells`.replace(
-          /third(s?)/,
-          groups === 3 ? 'third$1' : `part$1 in ${groups}`,
-        ),
-        0.85,
-        ['a failed bypass diode', 'cracked cells', 'shade on one row of cells all day'],
-        bypassed,
-      );
+      return made('bypassed_substring', said.bypassed(bypassed, groups), 0.85, couldBe.bypassed, bypassed);
   }
   if (drift !== null && drift.steps && drift.perDay < -0.001)
-    return made('soiling', 'it fell day by day and came back with the rain: dirt', 0.75, [
-      'pollen',
-      'bird droppings',
-    ]);
+    return made('soiling', said.soiling, 0.75, couldBe.soiling);
   const voltageRight = voltageRatio === null || Math.abs(1 - voltageRatio) <= UNCHANGED;
   if (currentRatio !== null && currentRatio < 1 - UNCHANGED && voltageRight)
-    return made('current_low', 'its current is low and its voltage right', alone ? 0.7 : 0.5, [
-      'even dirt on its modules',
-      'modules of another kind or age',
-      ...(alone
-        ? []
-        : ['one of the strings on this input is disconnected or held down by units in shutdown']),
-    ]);
-  return made('unclear', 'voltage and current fit no single cause', 0.3, [
-    'several causes at once',
-    'a unit that works on and off',
-    'a tracking fault of the inverter input',
-  ]);
+    return alone
+      ? made('current_low', said.currentLow, 0.7, couldBe.currentLow)
+      : made('current_low', said.currentLow, 0.5, couldBe.currentLowOfInput);
+  return made('unclear', said.unclear, 0.3, couldBe.unclear);
 }
 
 /** Sun azimuths at which the string is low day after day, while it is well elsewhere; null: no such pattern. */

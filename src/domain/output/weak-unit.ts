@@ -1,3 +1,4 @@
+import { weakUnitCouldBe, weakUnitSaid } from '../../words/domain-weak-unit';
 import { median, sigmaMad } from './robust';
 
 /**
@@ -67,7 +68,6 @@ export function weakUnits(input: UnitVoltages, lossMin = LOSS_MIN): WeakUnit[] {
       kind: WeakUnit['kind'],
       words: string,
       confidence: number,
-      couldBe: string[],
       count: number | null = null,
     ): WeakUnit[] => [
       {
@@ -79,42 +79,22 @@ export function weakUnits(input: UnitVoltages, lossMin = LOSS_MIN): WeakUnit[] {
         words,
         threshold: {
           ratio: limit,
-          source: '3.5 robust standard deviations (Iglewicz & Hoaglin 1993), at least 6 %',
+          source: weakUnitSaid.source,
         },
         confidence,
-        couldBe,
+        couldBe: [...weakUnitCouldBe[kind]],
       },
     ];
     if (low < SOMETIMES) return [];
-    if (low < MOSTLY)
-      return made('part_of_day', `Unit ${unit + 1} is low for part of the day`, 0.7, [
-        'shade from something near',
-        'a contact that comes and goes',
-      ]);
-    if (ratio < HELD_BELOW)
-      return made('held', `Unit ${unit + 1} passes nothing of its module's voltage`, 0.95, [
-        'in shutdown while released',
-        'its module is not mated',
-        'its module is dead or covered',
-      ]);
+    if (low < MOSTLY) return made('part_of_day', weakUnitSaid.partOfDay(unit + 1), 0.7);
+    if (ratio < HELD_BELOW) return made('held', weakUnitSaid.held(unit + 1), 0.95);
     const missing = 1 - ratio;
     const count = Math.round((missing - diode) / group);
     const off = Math.abs(missing - diode - count * group);
     const steady = sigmaMad(r) < group / 4;
     if (count >= 1 && count < bypassGroups && off < group / 4 && steady)
-      return made(
-        'bypassed_substring',
-        `Unit ${unit + 1} gives ${bypassGroups - count} of ${bypassGroups} parts of its module's voltage: ${count === 1 ? 'one sub-string of cells is' : `${count} sub-strings of cells are`} bypassed`,
-        0.9,
-        ['a failed bypass diode', 'cracked cells', 'shade on one row of cells all day'],
-        count,
-      );
-    return made(
-      'low',
-      `Unit ${unit + 1} gives ${Math.round(100 * missing)} % less than its neighbours`,
-      0.7,
-      ['dirt or shade on its module', 'a module of another type', 'its measurement is off'],
-    );
+      return made('bypassed_substring', weakUnitSaid.bypassed(unit + 1, count, bypassGroups), 0.9, count);
+    return made('low', weakUnitSaid.low(unit + 1, missing), 0.7);
   });
 }
 

@@ -3,6 +3,7 @@ import { number, percent, quantity } from '../../drawings/numbers';
 import { shortDate } from '../../drawings/times';
 import type { CausePage } from '../../schemas/api/causes';
 import { causesFigures } from '../../words/causes';
+import { loopThan } from '../../words/domain-loop';
 
 /** The figures of a finding as a list of names and values. What an older version kept differently is left out. */
 
@@ -103,7 +104,7 @@ const ohm = (x: number): string => quantity(x, 'Ω', 2);
 function loopFigures(f: z.infer<typeof loop> | undefined): Figure[] {
   if (!f?.fit || !f.above) return [];
   return [
-    { label: causesFigures.moreThan(f.above.comparedWith), value: ohm(f.above.ohm) },
+    { label: causesFigures.moreThan(loopThan(f.above.comparedWith)), value: ohm(f.above.ohm) },
     { label: causesFigures.n95Sure, value: range(f.above.low, f.above.high, ohm) },
     { label: causesFigures.wholeLoop, value: ohm(f.fit.ohm) },
     { label: causesFigures.lookedAtAbove, value: `${ohm(f.threshold.ohm)}: ${f.threshold.source}` },

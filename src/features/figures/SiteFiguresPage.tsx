@@ -4,7 +4,7 @@ import { Heading } from '../../components/ui/Heading';
 import { Notice } from '../../components/ui/Notice';
 import { Sheet } from '../../components/ui/Sheet';
 import { Table } from '../../components/ui/Table';
-import { monthName } from '../../domain/output/period';
+import { monthName } from '../../words/domain-periods';
 import { DayCalendar, YearCalendar, type CalendarDay } from '../../drawings/DayCalendar';
 import { type LossBar } from '../../drawings/loss-bars';
 import { LossBars } from '../../drawings/LossBars';

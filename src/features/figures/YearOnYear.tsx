@@ -1,6 +1,6 @@
 import { Sheet } from '../../components/ui/Sheet';
 import { Table } from '../../components/ui/Table';
-import { monthName } from '../../domain/output/period';
+import { monthName } from '../../words/domain-periods';
 import { energy, number } from '../../drawings/numbers';
 import { yearChange } from '../../drawings/year-change';
 import { YearBars } from '../../drawings/YearBars';

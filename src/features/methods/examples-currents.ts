@@ -3,6 +3,7 @@ import { fitLoop, judgeLoop, type LoopSample } from '../../domain/output/resista
 import { UNITS_MIN, weakUnits, type WeakUnit } from '../../domain/output/weak-unit';
 import { number, percent, quantity } from '../../drawings/numbers';
 import type { Example } from './example';
+import { loopThan } from '../../words/domain-loop';
 import { examplesCurrents } from '../../words/method-examples';
 
 const SAMPLES = 96;
@@ -143,7 +144,7 @@ export const resistanceExample: Example = {
             : '–',
         },
         {
-          label: examplesCurrents.moreThan(finding.above?.comparedWith),
+          label: examplesCurrents.moreThan(finding.above ? loopThan(finding.above.comparedWith) : undefined),
           value: finding.above ? quantity(finding.above.ohm, 'Ω', 2) : '–',
         },
         {

@@ -1,6 +1,7 @@
 import { BAND, HEARD_MIN, NOT_STIRRED_BELOW } from '../../domain/commissioning/roll-call';
 import { DAYS_LOOKED_AT, DAYS_LOW, LOSS_MIN, Z_LIMIT } from '../../domain/output/low-output';
-import { DECISIVE_METHOD, ODDS_NEEDED } from '../../domain/output/membership';
+import { ODDS_NEEDED } from '../../domain/output/membership';
+import { DECISIVE_METHOD } from '../../words/domain-membership';
 import { SIBLINGS_MIN, SUN_ENOUGH } from '../../domain/output/plane-reference';
 import {
   DEVIATIONS as DEVIATIONS_LOOP,

@@ -1,16 +1,20 @@
 import type { FoundCause, FoundUnit } from '../../domain/causes/changes';
-import { DECISIVE_METHOD } from '../../domain/output/membership';
 import type { OutputFinding } from '../../domain/output/low-output';
 import type { LoopFinding } from '../../domain/output/resistance';
 import type { WeakUnit } from '../../domain/output/weak-unit';
 import type { MembershipSuspect } from '../../schemas/api/membership';
 import type { KeptOutputFinding } from '../queries/output-days';
 import type { OutputString } from '../queries/output-series';
+import { causePlaces } from '../../words/domain-causes';
+import {
+  nightLoop,
+  nightLowOutput,
+  nightParts,
+  nightWeakUnit,
+  nightWrongString,
+} from '../../words/night-findings';
 
 /** What a night found, as causes. */
-
-const percent = (share: number): string => `${Math.round(100 * share)} %`;
-const SIBLINGS_UNKNOWN = 'its own model, since its plane has too few strings to compare';
 
 const whole = (s: OutputString, sinceS: number): FoundUnit => ({
   stringId: s.ref,
@@ -26,7 +30,6 @@ const unitOf = (s: OutputString, slot: number, sinceS: number): FoundUnit => ({
   serial: s.serials[slot] ?? null,
   sinceS,
 });
-const names = (list: readonly OutputString[]): string => list.map((s) => s.name).join(' and ');
 
 /** A finding with its days by date. */
 export function keptFinding(
@@ -48,16 +51,17 @@ export function lowOutputCause(
   const low = finding.days.filter((d) => d.low).length;
   const bySiblings = finding.method === 'siblings';
   const days = Math.max(1, finding.days.length);
+  const names = members.map((m) => m.name);
   const key = [...members].map((m) => m.ref).sort()[0] ?? '';
   return {
     key: `low_output:string:${key}@${siteRef}`,
     kind: 'low_output',
     sharedPart:
       members.length === 1
-        ? { kind: 'string', name: names(members) }
-        : { kind: 'input', name: `the input of ${names(members)}` },
-    headline: `${members.length === 1 ? 'String' : 'Strings'} ${names(members)} ${members.length === 1 ? 'makes' : 'make'} ${percent(share)} less than ${bySiblings ? 'the strings of the same plane' : 'the modules should'}`,
-    evidence: `${sentence(finding.signature?.words ?? 'what it looks like is not clear')} Low on ${low} of the last ${finding.days.length} days with enough sun, held against ${bySiblings ? 'the strings of its plane' : SIBLINGS_UNKNOWN}.`,
+        ? { kind: 'string', name: nightParts.strings(names) }
+        : { kind: 'input', name: nightParts.inputOf(names) },
+    headline: nightLowOutput.headline(names, share, bySiblings),
+    evidence: nightLowOutput.evidence(finding.signature?.words, low, finding.days.length, bySiblings),
     figures: { finding: kept },
     alternatives: finding.signature?.couldBe ?? [],
     confidence: Math.min(finding.confidence, finding.signature?.confidence ?? 1),
@@ -79,7 +83,7 @@ export function loopCause(
     key: `loop_resistance:string:${s.ref}@${siteRef}`,
     kind: 'loop_resistance',
     sharedPart: { kind: 'string', name: s.name },
-    headline: `Between the units and the input of ${s.name} there are ${ohm.toFixed(2)} Ω too many`,
+    headline: nightLoop.headline(s.name, ohm),
     evidence: finding.words,
     figures: { finding },
     alternatives: finding.couldBe,
@@ -100,12 +104,12 @@ export function weakUnitCause(
   return {
     key: `weak_unit:unit:${s.ref}:${weak.unit + 1}@${siteRef}`,
     kind: 'weak_unit',
-    sharedPart: { kind: 'unit', name: s.serials[weak.unit] ?? `${s.name} position ${weak.unit + 1}` },
+    sharedPart: { kind: 'unit', name: s.serials[weak.unit] ?? causePlaces.position(s.name, weak.unit + 1) },
     headline:
       weak.kind === 'bypassed_substring'
-        ? `Module ${weak.unit + 1} of ${s.name} has ${weak.count === 1 ? 'a bypassed sub-string of cells' : `${weak.count ?? 0} bypassed sub-strings of cells`}`
-        : `Unit ${weak.unit + 1} of ${s.name} gives ${percent(1 - weak.ratio)} less than its neighbours`,
-    evidence: `${sentence(weak.words)} So on ${percent(weak.share)} of the quarters under load, on at least two of three days.`,
+        ? nightWeakUnit.bypassed(s.name, weak.unit + 1, weak.count ?? 0)
+        : nightWeakUnit.low(s.name, weak.unit + 1, 1 - weak.ratio),
+    evidence: nightWeakUnit.evidence(weak.words, weak.share),
     figures: { finding: weak },
     alternatives: weak.couldBe,
     confidence: weak.confidence,
@@ -149,14 +153,13 @@ export function wrongStringCauses(
         kind: 'wrong_string',
         sharedPart: null,
         headline: other
-          ? `Unit ${s.position} of ${s.string} and unit ${other.position} of ${other.string} stand in each other's string`
-          : `Unit ${s.position} of ${s.string} carries the current of ${s.otherString ?? 'another string'}`,
-        // how it is decided is said once, at the end
-        evidence: [...both.map((m) => m.words.replace(` ${DECISIVE_METHOD}`, '')), DECISIVE_METHOD].join(' '),
+          ? nightWrongString.eachInTheOthers(s.position, s.string, other.position, other.string)
+          : nightWrongString.carriesAnothers(s.position, s.string, s.otherString),
+        evidence: nightWrongString.evidence(both.map((m) => m.words)),
         figures: {
           units: both.map(({ series: _, ...m }) => m),
         },
-        alternatives: ['the as-built names the wrong serial', "the unit's current measurement is off"],
+        alternatives: nightWrongString.couldBe,
         confidence: 0.9,
         units: both.map(unit),
         sinceS,
@@ -165,5 +168,3 @@ export function wrongStringCauses(
     ];
   });
 }
-
-const sentence = (words: string): string => `${words.charAt(0).toUpperCase()}${words.slice(1)}.`;

@@ -10,7 +10,7 @@ import {
 } from '../../domain/output/period';
 import { worthOf } from '../../domain/output/tariff';
 import { thresholdsOf } from '../../domain/settings/thresholds';
-import { LOSS_WORDS } from '../../domain/output/loss-words';
+import { lossOf } from '../../words/domain-losses';
 import type { Actor } from '../../domain/access/permissions';
 import type { z } from 'zod';
 import type { FleetFigures, FleetFiguresRow, SiteFigures, newTariff } from '../../schemas/api/figures';
@@ -148,7 +148,7 @@ export async function siteFigures(
     imported: await importedIn(tx, site.id, period),
     steps: lossSteps(
       sums,
-      [...byKind].map(([kind, kWh]) => ({ label: LOSS_WORDS[kind] ?? figureRefusals.otherCauses, kWh })),
+      [...byKind].map(([kind, kWh]) => ({ label: lossOf(kind) ?? figureRefusals.otherCauses, kWh })),
     ),
     losses: losses.map((l) => ({
       cause: l.ref,

@@ -1,4 +1,4 @@
-import { monthName } from '../../../domain/output/period';
+import { monthName } from '../../../words/domain-periods';
 import { laidBars } from '../../../drawings/loss-bars';
 import { energy, number, percent, quantity } from '../../../drawings/numbers';
 import { PAPER } from '../../../drawings/paint';

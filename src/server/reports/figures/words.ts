@@ -4,6 +4,7 @@ import type { LossBar } from '../../../drawings/loss-bars';
 import { energy, listed, money, number, percent, quantity, UNKNOWN } from '../../../drawings/numbers';
 import { longDate } from '../../../drawings/times';
 import type { Compared, FleetFigures, SiteFigures } from '../../../schemas/api/figures';
+import { periodLabels } from '../../../words/domain-periods';
 import { papersFiguresWords } from '../../../words/papers-figures';
 
 /** What figures say in words; pages and the report on paper use the same. */
@@ -25,13 +26,17 @@ export function changeWords(compared: Compared | null, than: string): string | n
   return papersFiguresWords.changeChangeThanThan(Math.abs(change), change, than);
 }
 
+/** What the same period of another year is called. */
+const labelIn = (year: number, { kind, key }: Pick<SiteFigures['period'], 'kind' | 'key'>): string =>
+  kind === 'year' ? String(year) : periodLabels.month(Number(key.slice(5)), year);
+
 const yearBeforeLabel = ({
   period,
   elapsed,
   compared,
 }: SiteFigures | (FleetFigures & { elapsed?: null })): string => {
   const year = Number(period.key.slice(0, 4)) - 1;
-  const label = period.kind === 'year' ? String(year) : `${period.label.split(' ')[0] ?? ''} ${year}`;
+  const label = labelIn(year, period);
   if (compared && compared.missing > 0) return papersFiguresWords.theSameDaysOf(label);
   return elapsed?.running ? papersFiguresWords.theSameWholeDays(label) : label;
 };
@@ -243,11 +248,7 @@ export function fleetFinding(f: FleetFigures): { finding: string; sentence: stri
         f.period.from > f.today ? papersFiguresWords.itLiesAhead : papersFiguresWords.noOperatingSiteHas,
     };
   const year = Number(f.period.key.slice(0, 4)) - 1;
-  const than = running(f)
-    ? papersFiguresWords.theSameWholeDaysA
-    : f.period.kind === 'year'
-      ? String(year)
-      : `${f.period.label.split(' ')[0] ?? ''} ${year}`;
+  const than = running(f) ? papersFiguresWords.theSameWholeDaysA : labelIn(year, f.period);
   const change = changeWords(f.compared, than);
   const made = energy(f.total.energyKWh * 1000);
   const low = f.rows.filter((r) => r.now.completeness < 0.9).map((r) => r.site.name);
