@@ -23,6 +23,7 @@ export const lowOutputPage = {
   lowStrings: 'Low strings',
   strings: 'Strings',
   rowsOfRows: (rows: number, rows2: number) => `${rows} of ${rows2}`,
+  rows: 'strings',
   findBySiteString: 'Find by site, string, plane or words',
   siteStringPlane: 'Site, string, plane',
   all: 'all',

@@ -1,4 +1,5 @@
 import { QueryClientProvider } from '@tanstack/react-query';
+import { useState } from 'react';
 import { SavedViews } from '../../components/saved-views/SavedViews';
 import { ButtonLink } from '../../components/ui/Button';
 import { Choice } from '../../components/ui/Choice';
@@ -6,6 +7,7 @@ import { Heading } from '../../components/ui/Heading';
 import { Notice } from '../../components/ui/Notice';
 import { SearchInput } from '../../components/ui/SearchInput';
 import { Sheet } from '../../components/ui/Sheet';
+import { ShowMore } from '../../components/ui/ShowMore';
 import { Table, type Column } from '../../components/ui/Table';
 import { energy, money, percent, UNKNOWN } from '../../drawings/numbers';
 import { shortDate } from '../../drawings/times';
@@ -31,6 +33,9 @@ interface Props {
   view: LowOutputView;
   defaults: LowOutputView;
 }
+
+/** Rows before somebody asks for more. */
+const ROWS_AT_ONCE = 50;
 
 const day = (text: string): string => shortDate(`${text}T12:00:00Z`, 'UTC');
 const between = (r: LowString): string =>
@@ -163,6 +168,7 @@ function columnsFor(low: LowOutput): Column<LowString>[] {
 
 function Page({ low, saved, view: asked, defaults }: Props) {
   const [view, setView] = useViewInUrl(asked, defaults);
+  const [most, setMost] = useState(ROWS_AT_ONCE);
   const rows = lowRows(low.rows, view);
   const { heading, sentence } = lowFinding(low);
   const sites = [...new Map(low.rows.map((r) => [r.site.id, r.site.name]))].sort((a, b) =>
@@ -237,7 +243,7 @@ function Page({ low, saved, view: asked, defaults }: Props) {
           <Table
             caption={lowOutputPage.stringsThatMakeLess}
             columns={columnsFor(low)}
-            rows={rows}
+            rows={rows.slice(0, most)}
             rowKey={(r) => r.string.id}
             sorting={{ key: view.sort, descending: view.order === 'down' }}
             onSort={({ key, descending }) => {
@@ -245,6 +251,12 @@ function Page({ low, saved, view: asked, defaults }: Props) {
               if (sort) setView({ sort, order: descending ? 'down' : 'up' });
             }}
             empty={<p className="py-4 text-ink-2">{lowOutputPage.noLowStringIs}</p>}
+          />
+          <ShowMore
+            shown={Math.min(most, rows.length)}
+            of={rows.length}
+            what={lowOutputPage.rows}
+            onMore={() => setMost(most + 4 * ROWS_AT_ONCE)}
           />
           <p className="mt-3 text-xs text-ink-3">{lowOutputPage.asEachStringsNewest}</p>
         </Sheet>

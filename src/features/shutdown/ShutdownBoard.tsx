@@ -22,6 +22,7 @@ import { paths } from '../../schemas/paths';
 import { HeldSites } from './HeldSites';
 import { UnitsTable } from './UnitsTable';
 import { shutdownFinding } from './finding';
+import { countOf, type Whole } from './first-page';
 import { heldSites, shownOf, shutdownGroups, type Group } from './groups';
 import { changedShutdown, shutdownKey, shutdownQuery, withAcknowledgement } from './query';
 import { shutdownBoard } from '../../words/shutdown';
@@ -45,11 +46,13 @@ const TITLE: Record<CauseNow['verdict'], string> = {
 
 interface Props {
   initial: ShutdownNow;
+  /** Of a large fleet, of which `initial` is the first page; null: it is all. */
+  whole: Whole | null;
   view: ShutdownView;
   timeZone: string;
 }
 
-export function ShutdownBoard({ initial, view: initialView, timeZone }: Props) {
+export function ShutdownBoard({ initial, whole: first, view: initialView, timeZone }: Props) {
   const client = queryClient();
   const { data: now, error, refetch } = useQuery(shutdownQuery(initial), client);
   const status = useLive('fleet', (change, kind) => {
@@ -58,53 +61,69 @@ export function ShutdownBoard({ initial, view: initialView, timeZone }: Props) {
     );
     if (kind === 'delta' && change.causes) void client.invalidateQueries({ queryKey: shutdownKey });
   });
-  const [view, change] = useViewInUrl(initialView, SHUTDOWN_DEFAULTS);
+  const [view, changeView] = useViewInUrl(initialView, SHUTDOWN_DEFAULTS);
+  const partly = first !== null && now.causes.length <= initial.causes.length ? first : null;
+  // what was counted is what the page was asked for
+  const asAsked = view.q === initialView.q && view.show === initialView.show;
+  // /live brings the rest of a large fleet within a second; who is quicker, or without it, asks
+  const askForRest = () => {
+    if (partly) void refetch();
+  };
+  const change: typeof changeView = (some, how) => {
+    askForRest();
+    changeView(some, how);
+  };
   const clock = useNow(initial.at).toISOString();
   const readerZone = useReaderZone() ?? timeZone;
-  const finding = useMemo(() => shutdownFinding(now.sites, now.causes), [now.sites, now.causes]);
+  const finding = useMemo(
+    () => partly?.finding ?? shutdownFinding(now.sites, now.causes),
+    [partly, now.sites, now.causes],
+  );
   const groups = useMemo(() => shutdownGroups(now.causes, view), [now.causes, view]);
   const held = useMemo(() => heldSites(now.sites), [now.sites]);
   const [whole, setWhole] = useState<ReadonlySet<Group['verdict']>>(new Set());
   const zoneOf = (siteId: string) => now.sites.find((s) => s.id === siteId)?.timeZone ?? timeZone;
 
-  const section = ({ verdict, causes }: Group) => (
-    <section key={verdict} aria-labelledby={`group-${verdict}`} className="mb-8">
-      <div className="mb-2.5 flex flex-wrap items-baseline justify-between gap-x-4">
-        <h2 id={`group-${verdict}`} className="text-[15px] leading-5 tracking-[-0.01em]">
-          {TITLE[verdict]}
-        </h2>
-        <p className="text-sm text-ink-2">
-          {shutdownBoard.oldestFirst(
-            causes.reduce((n, c) => n + c.units.length, 0),
-            causes.length,
-          )}
-        </p>
-      </div>
-      <div className="space-y-4">
-        {shownOf({ verdict, causes }, whole).map((cause) => (
-          <CauseSheet
-            key={cause.key}
-            cause={cause}
-            timeZone={zoneOf(cause.siteId)}
-            now={clock}
-            contact={now.contacts.find((c) => c.siteId === cause.siteId)}
-            taken={now.acknowledgements.find((a) => a.key === cause.key)}
-            onTaken={(reply) =>
-              client.setQueryData<ShutdownNow>(shutdownKey, (old) => withAcknowledgement(old ?? now, reply))
-            }
-          >
-            <UnitsTable cause={cause} timeZone={zoneOf(cause.siteId)} now={clock} />
-          </CauseSheet>
-        ))}
-      </div>
-      <ShowMore
-        shown={shownOf({ verdict, causes }, whole).length}
-        of={causes.length}
-        what={shutdownBoard.causes}
-        onMore={() => setWhole(new Set([...whole, verdict]))}
-      />
-    </section>
-  );
+  const section = ({ verdict, causes }: Group) => {
+    const count = (asAsked && partly?.groups[verdict]) || countOf({ causes });
+    const shown = shownOf({ verdict, causes }, whole);
+    return (
+      <section key={verdict} aria-labelledby={`group-${verdict}`} className="mb-8">
+        <div className="mb-2.5 flex flex-wrap items-baseline justify-between gap-x-4">
+          <h2 id={`group-${verdict}`} className="text-[15px] leading-5 tracking-[-0.01em]">
+            {TITLE[verdict]}
+          </h2>
+          <p className="text-sm text-ink-2">{shutdownBoard.oldestFirst(count.units, count.causes)}</p>
+        </div>
+        <div className="space-y-4">
+          {shown.map((cause) => (
+            <CauseSheet
+              key={cause.key}
+              cause={cause}
+              timeZone={zoneOf(cause.siteId)}
+              now={clock}
+              contact={now.contacts.find((c) => c.siteId === cause.siteId)}
+              taken={now.acknowledgements.find((a) => a.key === cause.key)}
+              onTaken={(reply) =>
+                client.setQueryData<ShutdownNow>(shutdownKey, (old) => withAcknowledgement(old ?? now, reply))
+              }
+            >
+              <UnitsTable cause={cause} timeZone={zoneOf(cause.siteId)} now={clock} />
+            </CauseSheet>
+          ))}
+        </div>
+        <ShowMore
+          shown={shown.length}
+          of={count.causes}
+          what={shutdownBoard.causes}
+          onMore={() => {
+            setWhole(new Set([...whole, verdict]));
+            askForRest();
+          }}
+        />
+      </section>
+    );
+  };
 
   return (
     <>

@@ -4,6 +4,7 @@ import type { CommandNow } from '../../schemas/api/now';
 import type { ShutdownNow } from '../../schemas/api/shutdown';
 import { SHUTDOWN_COLUMNS } from './columns';
 import { shutdownFinding } from './finding';
+import { firstPage } from './first-page';
 import { CAUSES_AT_ONCE, heldSites, shownOf, shutdownGroups, shutdownRows } from './groups';
 import { changedShutdown } from './query';
 
@@ -125,5 +126,40 @@ describe('what /live brings', () => {
     );
     expect(next.causes).toEqual([]);
     expect(next.sites.map((s) => s.name)).toEqual(['Furrowfield Depot']);
+  });
+});
+
+describe('the first page of a large fleet', () => {
+  const many = Array.from({ length: CAUSES_AT_ONCE + 5 }, (_, i) =>
+    cause('stuck', `Works ${100 + i}`, [unitOf('A1', 1), unitOf('A1', 2)], {
+      since: new Date(Date.UTC(2026, 5, 1, 8, i)).toISOString(),
+    }),
+  );
+  const now: ShutdownNow = {
+    at: '2026-06-01T14:00:00.000Z',
+    causes: [...many, hazard],
+    sites: [...[...many, hazard].map((c) => site(c.siteName)), lantern],
+    contacts: [],
+    acknowledgements: [],
+  };
+
+  it('is all there is, where that is little', () => {
+    const few = { ...now, causes: [hazard, newer] };
+    expect(firstPage(few, { q: '', show: 'all' })).toEqual({ shutdown: few, whole: null });
+  });
+
+  it('holds what is drawn, every site that is held, and counts the whole', () => {
+    const { shutdown, whole } = firstPage(now, { q: '', show: 'all' });
+    expect(shutdown.causes).toHaveLength(CAUSES_AT_ONCE + 1);
+    expect(shutdown.causes).toContain(hazard);
+    expect(shutdown.sites.map((s) => s.name)).toContain('Lantern Works');
+    expect(shutdown.sites.map((s) => s.name)).not.toContain('Works 124');
+    expect(whole?.groups.stuck).toEqual({ causes: many.length, units: 2 * many.length });
+    expect(whole?.finding).toEqual(shutdownFinding(now.sites, now.causes));
+  });
+
+  it('of a search holds what is found, with all its units', () => {
+    const { shutdown } = firstPage(now, { q: 'works 124', show: 'all' });
+    expect(shutdown.causes.map((c) => [c.siteName, c.units.length])).toEqual([['Works 124', 2]]);
   });
 });

@@ -33,52 +33,41 @@ interface Row extends Counts {
  */
 export async function sitesNow(tx: Tx, at: Date, siteIds?: readonly number[]): Promise<SiteNow[]> {
   const { rows } = await tx.raw<{ rows: Row[] }>(
-    `with chosen as (select * from site where ${siteIds ? 'site.id = any (:siteIds)' : SITE_VISIBLE}),
-     judged as (
-       select site_id, sum(passing)::int as passing, sum(shutdown)::int as shutdown, sum(unheard)::int as unheard,
-              sum(silent)::int as silent, sum(dark)::int as dark, sum(stuck)::int as stuck,
-              sum(not_shutting_down)::int as not_shutting_down, sum(unconfirmed)::int as unconfirmed
-       from string_judgement where site_id in (select id from chosen) group by site_id),
-     placed as (
-       select site_id, count(*)::int as units from placement
-       where placed_to is null and site_id in (select id from chosen) group by site_id),
-     wired as (
-       select site_id, count(*)::int as strings from string where site_id in (select id from chosen) group by site_id),
-     made as (
-       select inv.site_id, sum(inv.ac_power_max) as ac_power_max, sum(st.ac_power)::float8 as ac_power, max(st.at) as at
-       from inverter inv left join inverter_state st on st.inverter_id = inv.id
-       where inv.site_id in (select id from chosen) group by inv.site_id),
-     reported as (
-       select site_id, max(at) as at from string_state where site_id in (select id from chosen) group by site_id),
-     said as (
-       select distinct on (c.zone_id, c.transmitter_id) c.site_id, c.in_force, c.since, c.said_by,
-              coalesce(z.name, t.name) as name, case when c.zone_id is null then 'transmitter' else 'zone' end as kind
-       from command c
-       left join zone z on z.id = c.zone_id
-       left join transmitter t on t.id = c.transmitter_id
-       where c.site_id in (select id from chosen)
-       order by c.zone_id, c.transmitter_id, c.since desc)
-     select c.id, c.ref, c.name, c.place, c.time_zone as "timeZone", c.stage, c.latitude, c.longitude, c.altitude,
-            c.report_interval_s as "reportIntervalS",
-            coalesce(p.units, 0) as units, coalesce(w.strings, 0) as strings,
-            coalesce(j.passing, 0) as passing, coalesce(j.shutdown, 0) as shutdown,
-            coalesce(j.unheard, 0) as unheard, coalesce(j.silent, 0) as silent, coalesce(j.dark, 0) as dark,
-            coalesce(j.stuck, 0) as stuck, coalesce(j.not_shutting_down, 0) as "notShuttingDown",
-            coalesce(j.unconfirmed, 0) as unconfirmed,
-            m.ac_power as "acPower", m.at as "acPowerAt", coalesce(m.ac_power_max, 0) as "acPowerMax",
-            r.at as "reportedAt",
-            (select count(*)::int from zone z where z.site_id = c.id) as zones,
-            coalesce((select json_agg(g.last_heard_at) from gateway g where g.site_id = c.id), '[]') as "gatewaysHeard",
-            (select max(l.last_spoke_at) from logger l where l.site_id = c.id and l.connected_at is not null) as "spokeAt",
-            coalesce((select json_agg(json_build_object('where', s.name, 'whereKind', s.kind, 'inForce', s.in_force,
-                       'since', s.since, 'by', s.said_by) order by s.since)
-                      from said s where s.site_id = c.id and s.in_force <> 'released'), '[]') as said
-     from chosen c
-     left join judged j on j.site_id = c.id
-     left join placed p on p.site_id = c.id
-     left join wired w on w.site_id = c.id
-     left join made m on m.site_id = c.id
-     left join reported r on r.site_id = c.id
+    // of every site its own lines, by their index: a plan that joins whole lists guesses one site, and takes n² for n
+    `select c.id, c.ref, c.name, c.place, c.time_zone as "timeZone", c.stage, c.latitude, c.longitude, c.altitude,
+            c.report_interval_s as "reportIntervalS", p.units, w.strings, j.*, m.*, r.*, z.*, g.*, l.*, d.*
+     from (select * from site where ${siteIds ? 'site.id = any (:siteIds)' : SITE_VISIBLE}) c
+     cross join lateral (
+       select coalesce(sum(passing), 0)::int as passing, coalesce(sum(shutdown), 0)::int as shutdown,
+              coalesce(sum(unheard), 0)::int as unheard, coalesce(sum(silent), 0)::int as silent,
+              coalesce(sum(dark), 0)::int as dark, coalesce(sum(stuck), 0)::int as stuck,
+              coalesce(sum(not_shutting_down), 0)::int as "notShuttingDown",
+              coalesce(sum(unconfirmed), 0)::int as unconfirmed
+       from string_judgement where site_id = c.id) j
+     cross join lateral (
+       select count(*)::int as units from placement where placed_to is null and site_id = c.id) p
+     cross join lateral (select count(*)::int as strings from string where site_id = c.id) w
+     cross join lateral (
+       select coalesce(sum(inv.ac_power_max), 0) as "acPowerMax", sum(st.ac_power)::float8 as "acPower",
+              max(st.at) as "acPowerAt"
+       from inverter inv left join inverter_state st on st.inverter_id = inv.id where inv.site_id = c.id) m
+     cross join lateral (select max(at) as "reportedAt" from string_state where site_id = c.id) r
+     cross join lateral (select count(*)::int as zones from zone where site_id = c.id) z
+     cross join lateral (
+       select coalesce(json_agg(last_heard_at), '[]') as "gatewaysHeard" from gateway where site_id = c.id) g
+     cross join lateral (
+       select max(last_spoke_at) as "spokeAt" from logger where site_id = c.id and connected_at is not null) l
+     cross join lateral (
+       select coalesce(json_agg(json_build_object('where', s.name, 'whereKind', s.kind, 'inForce', s.in_force,
+                       'since', s.since, 'by', s.said_by) order by s.since), '[]') as said
+       from (select distinct on (o.zone_id, o.transmitter_id) o.in_force, o.since, o.said_by,
+                    coalesce(z.name, t.name) as name, case when o.zone_id is null then 'transmitter' else 'zone' end as kind
+             from command o
+             left join zone z on z.id = o.zone_id
+             left join transmitter t on t.id = o.transmitter_id
+             where o.site_id = c.id
+             order by o.zone_id, o.transmitter_id, o.since desc) s
+       where s.in_force <> 'released') d
      order by c.name`,
     siteIds ? { siteIds: [...siteIds] } : {},
   );
@@ -171,13 +160,14 @@ async function performanceRatios(
   const asked = siteIds.filter((id) => (ratiosKept.get(id)?.untilMs ?? 0) <= at.getTime());
   if (asked.length > 0) {
     const { rows } = await tx.raw<{ rows: { siteId: number; ratio: number | null }[] }>(
-      `select site_id as "siteId",
-              case when sum(insolation) >= 5000
-                   then sum(energy_ac_lit)::float8 / nullif(sum(nameplate::float8 * insolation) / 1000, 0) end as ratio
-       from site_day
-       where site_id = any (:asked) and day >= (:from::timestamptz at time zone 'UTC')::date and day <= :at::timestamptz::date + 1
-         and insolation is not null
-       group by site_id`,
+      `select d.site_id as "siteId",
+              case when sum(d.insolation) >= 5000
+                   then sum(d.energy_ac_lit)::float8 / nullif(sum(d.nameplate::float8 * d.insolation) / 1000, 0) end as ratio
+       from site_day d join site on site.id = d.site_id
+       where d.site_id = any (:asked) and d.insolation is not null
+         and d.day between (:from::timestamptz at time zone site.time_zone)::date
+                       and (:at::timestamptz at time zone site.time_zone)::date
+       group by d.site_id`,
       { asked: [...asked], at, from: new Date(at.getTime() - 30 * 86_400_000) },
     );
     const untilMs = at.getTime() + RATIO_KEPT_MS;
