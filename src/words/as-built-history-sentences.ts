@@ -1,4 +1,5 @@
-import { fieldOf, PART_KINDS, PART_WORDS, type PartKind } from '../domain/commissioning/as-built/parts';
+import { fieldOf, PART_KINDS, type PartKind } from '../domain/commissioning/as-built/parts';
+import { PART_WORDS } from './domain-as-built-parts';
 import type { HistoryItem } from '../schemas/api/as-built';
 
 /** What an entry of the history says, in words. */

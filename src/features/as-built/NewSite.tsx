@@ -77,8 +77,8 @@ export function NewSite({ timeZones, timeZone, at }: Props) {
               onChange={(key, value) => setTyped((old) => ({ ...old, [key]: value }))}
             />
           </div>
-          {group.title === 'Where' && <SunAndClock form={form} at={at} />}
-          {group.title === 'Shutdown and reports' && (
+          {group.title === newSite.where && <SunAndClock form={form} at={at} />}
+          {group.title === newSite.shutdownAndReports && (
             <p className="mt-4 text-ink-2">{newSite.anInitiatorAtThis}</p>
           )}
         </Sheet>

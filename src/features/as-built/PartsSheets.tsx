@@ -3,12 +3,12 @@ import { Button } from '../../components/ui/Button';
 import { Sheet } from '../../components/ui/Sheet';
 import { SiteTime } from '../../components/ui/Time';
 import {
-  PART_WORDS,
   RULE_SETS,
   SENSOR_KINDS,
   STRUCTURES,
   type PartKind,
 } from '../../domain/commissioning/as-built/parts';
+import { PART_WORDS } from '../../words/domain-as-built-parts';
 import { celsius, power } from '../../drawings/numbers';
 import type { AsBuilt } from '../../schemas/api/as-built';
 import { nameOf } from '../../schemas/as-built-values';

@@ -1,7 +1,8 @@
 import type { Actor } from '../../domain/access/permissions';
 import { checkPart, together } from '../../domain/commissioning/as-built/check-part';
 import { mergeEdit, type Value } from '../../domain/commissioning/as-built/merge';
-import { fieldOf, PART_WORDS, type PartKind } from '../../domain/commissioning/as-built/parts';
+import { fieldOf, type PartKind } from '../../domain/commissioning/as-built/parts';
+import { PART_WORDS } from '../../words/domain-as-built-parts';
 import type { AsBuilt, PartValues } from '../../schemas/api/as-built';
 import { labelOf, nameOf, partOf } from '../../schemas/as-built-values';
 import type { Tx } from '../db/transaction';

@@ -1,3 +1,4 @@
+import { partFaultSaid } from '../../../words/domain-as-built-faults';
 import { readSerial } from '../import/serial';
 import type { Value } from './merge';
 import { PART_FIELDS, type PartField, type PartKind } from './parts';
@@ -11,7 +12,6 @@ export type CheckedPart =
 
 const UUID = /^[0-9a-f]{8}-[0-9a-f]{4}-[0-9a-f]{4}-[0-9a-f]{4}-[0-9a-f]{12}$/i;
 const written = (n: number): string => String(n).replace('-', '−');
-const lower = (text: string): string => text.charAt(0).toLowerCase() + text.slice(1);
 
 /** Whether this is a time zone of the IANA database. */
 export function isTimeZone(zone: string): boolean {
@@ -25,12 +25,12 @@ export function isTimeZone(zone: string): boolean {
 
 function checkField(field: PartField, given: unknown): { value: Value } | { message: string } {
   const no = (message: string) => ({ message });
+  const said = partFaultSaid;
   switch (field.kind) {
     case 'text': {
       const value = typeof given === 'string' ? given.trim() : '';
-      if (value === '' && !field.optional) return no(`${field.label}: type one.`);
-      if (value.length > field.longest)
-        return no(`${field.label}: ${value.length} characters are too many. ${field.longest} at most.`);
+      if (value === '' && !field.optional) return no(said.typeOne(field.label));
+      if (value.length > field.longest) return no(said.tooLong(field.label, value.length, field.longest));
       return { value };
     }
     case 'serial': {
@@ -38,43 +38,41 @@ function checkField(field: PartField, given: unknown): { value: Value } | { mess
       if (read.kind === 'serial') return { value: read.serial };
       return no(
         read.kind === 'empty'
-          ? `${field.label}: type it as on the label.`
-          : `${field.label}: ${read.message}. ${read.remedy}`,
+          ? said.typeAsOnLabel(field.label)
+          : said.serialFault(field.label, read.message, read.remedy),
       );
     }
     case 'number': {
       const { label, min, max, unit, whole, optional } = field;
-      const span = `from ${written(min)} to ${written(max)}${unit ? ` ${unit}` : ''}`;
+      const span = said.span(written(min), written(max), unit);
       if (given === null || given === undefined || given === '')
-        return optional ? { value: null } : no(`${label}: type a number ${span}.`);
-      if (typeof given !== 'number' || !Number.isFinite(given)) return no(`${label}: type a number ${span}.`);
-      if (whole && !Number.isInteger(given))
-        return no(`${label}: ${written(given)} is no whole number. Type one ${span}.`);
-      if (given < min || given > max)
-        return no(`${label}: ${written(given)} is outside what is possible. Type a number ${span}.`);
+        return optional ? { value: null } : no(said.typeNumber(label, span));
+      if (typeof given !== 'number' || !Number.isFinite(given)) return no(said.typeNumber(label, span));
+      if (whole && !Number.isInteger(given)) return no(said.notWhole(label, written(given), span));
+      if (given < min || given > max) return no(said.outside(label, written(given), span));
       return { value: given };
     }
     case 'choice':
       return field.options.some((o) => o.value === given)
         ? { value: given as string }
-        : no(`${field.label}: choose one of the list.`);
+        : no(said.chooseOne(field.label));
     case 'time_zone':
       return typeof given === 'string' && isTimeZone(given)
         ? { value: given }
-        : no(`${field.label}: choose one of the list, such as Europe/London.`);
+        : no(said.chooseZone(field.label));
     case 'yes':
-      return typeof given === 'boolean' ? { value: given } : no(`${field.label}: say yes or no.`);
+      return typeof given === 'boolean' ? { value: given } : no(said.sayYesOrNo(field.label));
     case 'part':
       if (given === null || given === undefined || given === '')
-        return field.optional ? { value: null } : no(`Choose the ${lower(field.label)}.`);
+        return field.optional ? { value: null } : no(said.choosePart(field.label));
       return typeof given === 'string' && UUID.test(given)
         ? { value: given }
-        : no(`${field.label}: choose one of the list.`);
+        : no(said.chooseOne(field.label));
     case 'parts':
       if (given === null || given === undefined) return { value: [] };
       return Array.isArray(given) && given.every((v): v is string => typeof v === 'string' && UUID.test(v))
         ? { value: [...new Set(given)].sort() }
-        : no(`${field.label}: choose from the list.`);
+        : no(said.chooseFromList(field.label));
   }
 }
 
@@ -91,7 +89,7 @@ export function checkPart(
   const values: Record<string, Value> = {};
   const fields = PART_FIELDS[kind];
   for (const key of Object.keys(given))
-    if (!fields.some((f) => f.key === key)) faults.push({ key, message: `"${key}" is not known here.` });
+    if (!fields.some((f) => f.key === key)) faults.push({ key, message: partFaultSaid.notKnown(key) });
   for (const field of fields) {
     if (only === 'given' && !(field.key in given)) continue;
     const checked = checkField(field, given[field.key]);
@@ -110,17 +108,12 @@ export function together(kind: PartKind, values: Readonly<Record<string, Value>>
       return [
         {
           key: 'temperatureMax',
-          message: `Hottest expected air: ${written(max)} °C is not above the coldest, ${written(min)} °C.`,
+          message: partFaultSaid.hottestNotAbove(written(max), written(min)),
         },
       ];
   }
   if (kind === 'sensor' && values.kind === 'poa_global' && values.plane === null)
-    return [
-      {
-        key: 'plane',
-        message: 'Plane: a sensor of irradiance in the plane needs the plane that it lies in.',
-      },
-    ];
+    return [{ key: 'plane', message: partFaultSaid.sensorNeedsPlane }];
   return [];
 }
 

@@ -1,3 +1,4 @@
+import { placementFaultSaid, unitPlaceSaid } from '../../../words/domain-as-built-faults';
 import { readSerial } from '../import/serial';
 
 /** Which units go into which slots: what a batch of changes means, and what is wrong with it. Pure. */
@@ -136,13 +137,7 @@ export function planPlacements(input: {
   const newest = { ms: 0 };
   const notBefore = (index: number, sinceMs: number, what: string): void => {
     if (input.atMs <= sinceMs - TOGETHER_MS)
-      fault(
-        index,
-        'slot',
-        'stale',
-        `${what} was changed after the time of this entry. Look at it as it stands now.`,
-        what,
-      );
+      fault(index, 'slot', 'stale', placementFaultSaid.changedSince(what), what);
     newest.ms = Math.max(newest.ms, sinceMs);
   };
 
@@ -150,8 +145,7 @@ export function planPlacements(input: {
     const had = slot.unit?.serial ?? null;
     const name = slotName(slot.stringName, slot.position);
     if (expected !== undefined && expected !== had && serial !== had) {
-      const now = had === null ? 'has no unit now' : `has ${had} now`;
-      fault(index, 'slot', 'stale', `${name} ${now}; you saw ${expected ?? 'it empty'}.`, name);
+      fault(index, 'slot', 'stale', placementFaultSaid.otherThanSeen(name, had, expected), name);
       continue;
     }
     if (serial === had) {
@@ -169,7 +163,7 @@ export function planPlacements(input: {
             index,
             'serial',
             'foreign_type',
-            `${serial} is on record as "${unit.unitTypeName}"; ${slot.stringName} takes "${slot.unitTypeName}". Look at the label.`,
+            placementFaultSaid.foreignType(serial, unit.unitTypeName, slot.stringName, slot.unitTypeName),
           );
       }
       notBefore(index, unit.sinceMs, serial);
@@ -177,7 +171,9 @@ export function planPlacements(input: {
         const there = from.slotId === null ? undefined : bySlot.get(from.slotId);
         if (!there) {
           if (!move || from.slotId === null) {
-            fault(index, 'serial', 'elsewhere', `${serial} sits ${placeOf(from, siteId)}. ${remedy(from)}`);
+            const told =
+              from.slotId === null ? placementFaultSaid.elsewhereUnseen : placementFaultSaid.elsewhere;
+            fault(index, 'serial', 'elsewhere', told(serial, placeOf(from, siteId)));
             continue;
           }
           plan.closes.push(from.placementId);
@@ -239,18 +235,18 @@ function readChanges(
   changes.forEach((change, index) => {
     const slot = slots.get(slotKey(change.slot.string, change.slot.position));
     if (!slot) {
-      fault(index, 'slot', 'no_slot', `There is no position ${change.slot.position} in this string.`);
+      fault(index, 'slot', 'no_slot', placementFaultSaid.noSlot(change.slot.position));
       return;
     }
     const name = slotName(slot.stringName, slot.position);
     if (firstOfSlot.has(slot.slotId)) {
-      fault(index, 'slot', 'duplicate', `${name} is named twice. Leave one of them out.`);
+      fault(index, 'slot', 'duplicate', placementFaultSaid.slotTwice(name));
       return;
     }
     firstOfSlot.set(slot.slotId, index);
     const read = change.serial === null ? null : readSerial(change.serial);
     if (read?.kind === 'fault') {
-      fault(index, 'serial', 'pattern', sentence(`${read.message}. ${read.remedy}`));
+      fault(index, 'serial', 'pattern', placementFaultSaid.serialFault(read.message, read.remedy));
       return;
     }
     const serial = read?.kind === 'serial' ? read.serial : null;
@@ -259,12 +255,7 @@ function readChanges(
       const first = firstOfSerial.get(entry.serial);
       if (first) {
         const other = slotName(first.slot.stringName, first.slot.position);
-        fault(
-          index,
-          'serial',
-          'duplicate',
-          `${entry.serial} is given for ${other} too. A unit sits in one slot.`,
-        );
+        fault(index, 'serial', 'duplicate', placementFaultSaid.serialTwice(entry.serial, other));
         return;
       }
       firstOfSerial.set(entry.serial, entry);
@@ -274,15 +265,9 @@ function readChanges(
   return wanted;
 }
 
-const sentence = (words: string): string => words.charAt(0).toUpperCase() + words.slice(1);
-
 function placeOf(sits: NonNullable<KnownUnit['sits']>, siteId: number): string {
-  if (sits.slotId === null || sits.stringName === null) return 'at another site that you do not see';
-  const slot = `${sits.stringName}, position ${sits.position ?? '?'}`;
-  return sits.siteId === siteId ? `in ${slot}` : `at ${sits.siteName ?? 'another site'}, in ${slot}`;
+  if (sits.slotId === null || sits.stringName === null) return unitPlaceSaid.unseen;
+  return sits.siteId === siteId
+    ? unitPlaceSaid.here(sits.stringName, sits.position)
+    : unitPlaceSaid.elsewhere(sits.siteName, sits.stringName, sits.position);
 }
-
-const remedy = (sits: NonNullable<KnownUnit['sits']>): string =>
-  sits.slotId === null
-    ? 'Ask a manager.'
-    : 'Look at the label again; if the unit was moved, say so, and it is taken from there.';
