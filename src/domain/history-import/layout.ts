@@ -1,4 +1,5 @@
 /** What the columns of a file of earlier readings mean, as guessed and as a person decided. */
+import { historySubjects, layoutSaid } from '../../words/domain-history-import';
 import type { DecimalMark } from '../commissioning/import/number';
 
 export const QUANTITIES = ['voltage', 'current', 'power', 'energy', 'temperature'] as const;
@@ -62,27 +63,11 @@ export const subjectKey = (s: Subject): string =>
         ? `i ${s.inverter} ${s.input}`
         : `v ${s.inverter}`;
 
-export const subjectWords = (s: Subject): string =>
-  s.kind === 'string'
-    ? `string ${s.string}`
-    : s.kind === 'unit'
-      ? `string ${s.string}, position ${s.position}`
-      : s.kind === 'input'
-        ? `${s.inverter}, input ${s.input}`
-        : s.inverter;
+export const subjectWords = historySubjects.subject;
 
 /** Columns that say when, and of what. */
 export const PLACE_COLUMNS = ['at', 'date', 'clock', 'string', 'position', 'inverter', 'input'] as const;
 export type PlaceColumn = (typeof PLACE_COLUMNS)[number];
-export const PLACE_WORDS: Record<PlaceColumn, string> = {
-  at: 'date and time',
-  date: 'date',
-  clock: 'time of day',
-  string: 'string',
-  position: 'position',
-  inverter: 'inverter',
-  input: 'input',
-};
 
 export type ColumnUse =
   | { as: 'nothing' }
@@ -118,22 +103,20 @@ export const namesRows = ({ columns }: Pick<Layout, 'columns'>): boolean =>
 export function layoutFault(layout: Pick<Layout, 'columns'>, headers: readonly string[] = []): string | null {
   const { columns } = layout;
   const has = (as: ColumnUse['as']) => columns.some((c) => c.as === as);
-  if (!has('at') && !has('date')) return 'Choose the column with the date and time.';
+  if (!has('at') && !has('date')) return layoutSaid.noTime;
   const values = columns.filter(isQuantity);
-  if (values.length === 0)
-    return 'Choose at least one column with voltage, current, power, energy or temperature.';
+  if (values.length === 0) return layoutSaid.noValues;
   const loose = columns.flatMap((c, i) =>
-    isQuantity(c) && c.of === null ? [headers[i] ?? `column ${i + 1}`] : [],
+    isQuantity(c) && c.of === null ? [headers[i] ?? layoutSaid.column(i + 1)] : [],
   );
-  if (!namesRows(layout) && loose.length > 0)
-    return `Say of what "${loose[0]}"${loose.length > 1 ? ` and ${loose.length - 1} more` : ''} is, or set it to not used; or choose the column that names the string or the inverter of each row.`;
-  if (has('input') && !has('inverter')) return 'An input needs the column that names its inverter.';
-  if (has('position') && !has('string')) return 'A position needs the column that names its string.';
+  const [first] = loose;
+  if (!namesRows(layout) && first !== undefined) return layoutSaid.ofWhat(first, loose.length - 1);
+  if (has('input') && !has('inverter')) return layoutSaid.inputNeedsInverter;
+  if (has('position') && !has('string')) return layoutSaid.positionNeedsString;
   const seen = new Set<string>();
   for (const c of values) {
     const key = `${c.as} ${c.of ? subjectKey(c.of) : ''}`;
-    if (seen.has(key))
-      return `Two columns hold the ${c.as} of ${c.of ? subjectWords(c.of) : 'the same row'}: choose one.`;
+    if (seen.has(key)) return layoutSaid.twice(c.as, c.of);
     seen.add(key);
   }
   return null;

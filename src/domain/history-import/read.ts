@@ -2,6 +2,7 @@
  * Reads rows of a file of earlier readings, one after the other, so that a file of any length takes no more memory than
  * a short one. The browser reads it to show what would come in, the server reads it again to keep it.
  */
+import { historyFaults as faults, historyRemedies as remedies } from '../../words/domain-history-import';
 import { NameBook, nearestName } from '../commissioning/import/names';
 import { readNumber, type DecimalMark, type ReadNumber } from '../commissioning/import/number';
 import {
@@ -164,15 +165,14 @@ export class HistoryReader {
     const read = readTime(text, time, this.layout.timeZone, this.layout.dayFirst);
     const wrong = (message: string, remedy: string) =>
       this.fault({ row: line, column, message, remedy, leaves: 'row' }, text);
-    if (read.kind === 'empty') return wrong('the time is missing', 'Fill it in, or leave the row out.');
+    if (read.kind === 'empty') return wrong(faults.timeMissing, remedies.fillIn);
     if (read.kind === 'fault') return wrong(read.message, read.remedy);
     // an hour that the clock repeats: rows run on in time, so the second time it is the later one
     const last = this.lastAt.get(key) ?? this.lastAt.get(this.groups[0]?.key ?? '');
     const at =
       read.kind === 'instant' ? read.at : last !== undefined && last >= read.at[0] ? read.at[1] : read.at[0];
-    if (at > this.nowS)
-      return wrong('lies in the future', 'Look at the year, and at which of day and month comes first.');
-    if (at < OLDEST_S) return wrong('lies before the year 2000', 'Look at the year.');
+    if (at > this.nowS) return wrong(faults.inTheFuture, remedies.lookAtYearAndOrder);
+    if (at < OLDEST_S) return wrong(faults.beforeTheYear2000, remedies.lookAtYear);
     return at;
   }
 
@@ -187,17 +187,15 @@ export class HistoryReader {
     const wrong = (at: number, message: string, remedy: string) =>
       this.fault({ row: line, column: at, message, remedy, leaves: 'row' }, cells[at] ?? '');
     const what = string === undefined ? 'inverter' : 'string';
-    if (name === '') return wrong(column, `the ${what} is missing`, 'Fill it in, or leave the row out.');
+    if (name === '') return wrong(column, faults.nameMissing(what), remedies.fillIn);
     const book = string === undefined ? this.inverters : this.strings;
     const found = book.find(name);
     if (found === undefined) {
       const near = nearestName(name, book.names);
       return wrong(
         column,
-        `no ${what} here is called "${name.slice(0, 40)}"`,
-        near
-          ? `Is ${near} meant? Names are those of the as-built.`
-          : `The as-built has ${listed(book.names)}.`,
+        faults.nobodyIsCalled(what, name.slice(0, 40)),
+        near ? remedies.isMeant(near) : remedies.asBuiltHas(book.names),
       );
     }
     let subject: Subject;
@@ -206,7 +204,7 @@ export class HistoryReader {
       const inputs = this.inputs.get(found) ?? [];
       if (input === undefined || number.kind === 'empty') subject = { kind: 'inverter', inverter: found };
       else if (number.kind !== 'number' || !inputs.includes(number.value))
-        return wrong(input, `${found} has no such input`, `It has ${listed(inputs.map(String))}.`);
+        return wrong(input, faults.noSuchInput(found), remedies.inputs(inputs));
       else subject = { kind: 'input', inverter: found, input: number.value };
     } else {
       const number = readNumber(cell(position));
@@ -218,7 +216,7 @@ export class HistoryReader {
         number.value < 1 ||
         number.value > slots
       )
-        return wrong(position, `${found} has no such position`, `Its positions go from 1 to ${slots}.`);
+        return wrong(position, faults.noSuchPosition(found), remedies.positions(slots));
       else subject = { kind: 'unit', string: found, position: number.value };
     }
     const made = { subject, key: subjectKey(subject) };
@@ -247,26 +245,15 @@ export class HistoryReader {
     const wrong = (message: string, remedy: string) =>
       this.fault({ row: line, column: column.index, message, remedy, leaves: 'cell' }, text);
     if (read.kind === 'empty') return null;
-    if (read.kind === 'fault') return wrong(read.message, 'Write a number, or leave the cell empty.');
+    if (read.kind === 'fault') return wrong(read.message, remedies.writeANumber);
     if (read.kind === 'ambiguous')
-      return wrong(
-        `"${text.trim()}" can be ${read.asDecimal} or ${read.asThousands}`,
-        'Say above which mark stands before decimals.',
-      );
+      return wrong(faults.twoNumbers(text.trim(), read.asDecimal, read.asThousands), remedies.sayTheMark);
     const value = read.value * column.factor + column.offset;
     const [low, high] = RANGES[column.quantity];
     if (value < low || value > high)
-      return wrong(
-        `${text.trim()} ${column.unit} is beyond any ${column.quantity} of a plant`,
-        'Is the column in another unit? Choose it above.',
-      );
+      return wrong(faults.beyond(text.trim(), column.unit, column.quantity), remedies.otherUnit);
     return value;
   }
-}
-
-function listed(names: readonly string[]): string {
-  const shown = names.slice(0, 6).join(', ');
-  return names.length === 0 ? 'none' : names.length > 6 ? `${shown} and ${names.length - 6} more` : shown;
 }
 
 /** Line breaks inside quoted cells: the next row begins so many lines further down. */

@@ -1,4 +1,5 @@
 /** Dates and times as they stand in files of several countries. */
+import { timeFaults as faults, timeRemedies as remedies } from '../../words/domain-history-import';
 import { instantsOf } from '../time/wall-clock';
 
 export type ReadTime =
@@ -57,14 +58,9 @@ export const looksLikeTime = (text: string): boolean => {
 };
 export const looksLikeClock = (text: string): boolean => CLOCK.test(text.trim());
 
-const fault = (text: string, why: string, remedy: string): ReadTime => ({
-  kind: 'fault',
-  message: `"${text.length > 40 ? `${text.slice(0, 39)}…` : text}" ${why}`,
-  remedy,
-});
-
-const ORDER = 'Say above whether the day or the month comes first.';
-const FORMS = 'Write it as 2026-03-28 14:15, 28.03.2026 14:15, or with a zone as 2026-03-28T14:15+01:00.';
+const fault = (message: string, remedy: string): ReadTime => ({ kind: 'fault', message, remedy });
+/** As much of a cell as a sentence has room for. */
+const short = (text: string): string => (text.length > 40 ? `${text.slice(0, 39)}…` : text);
 
 function wallOf(text: string, dayFirst: boolean | null): Wall | ReadTime {
   const iso = ISO.exec(text);
@@ -79,13 +75,13 @@ function wallOf(text: string, dayFirst: boolean | null): Wall | ReadTime {
       offsetMin: offsetOf(iso[7]),
     };
   const found = DAY_OR_MONTH_FIRST.exec(text);
-  if (!found) return fault(text, 'is no date and time', FORMS);
+  if (!found) return fault(faults.noDateAndTime(short(text)), remedies.forms);
   const first = found[2] === '.' ? true : dayFirst;
   if (first === null && saysDayFirst(text) === null)
-    return fault(text, 'can be meant two ways: day or month first', ORDER);
+    return fault(faults.twoWays(short(text)), remedies.order);
   const isDayFirst = first ?? saysDayFirst(text) ?? true;
   const hour = hourOf(found[5], found[8]);
-  if (hour === undefined) return fault(text, 'has no such hour', FORMS);
+  if (hour === undefined) return fault(faults.noSuchHour(short(text)), remedies.forms);
   const year = number(found[4]);
   return {
     year: year < 100 ? 2000 + year : year,
@@ -118,7 +114,7 @@ export function readTime(
     const [, hours, minutes, seconds, half] = CLOCK.exec(clock.trim()) ?? [];
     const hour = hourOf(hours, half);
     if (hours === undefined || hour === undefined)
-      return fault(clock.trim(), 'is no time of day', 'Write it as 14:15 or 14:15:00.');
+      return fault(faults.noTimeOfDay(short(clock.trim())), remedies.clock);
     Object.assign(wall, { hour, minute: number(minutes), second: number(seconds) });
   }
   return instantOf(wall, clock === null ? trimmed : `${trimmed} ${clock.trim()}`, timeZone);
@@ -130,22 +126,13 @@ function instantOf(w: Wall, text: string, timeZone: string): ReadTime {
   const ms = Date.UTC(w.year, w.month - 1, w.day, end ? 0 : w.hour, w.minute, w.second);
   const back = new Date(ms);
   if (back.getUTCMonth() !== w.month - 1 || back.getUTCDate() !== w.day)
-    return fault(
-      text,
-      'is no day of the calendar',
-      'Mend the date; look whether day and month changed places.',
-    );
+    return fault(faults.noDayOfTheCalendar(short(text)), remedies.mendDate);
   if ((w.hour > 23 && !end) || w.minute > 59 || w.second > 59)
-    return fault(text, 'is no time of day', 'Mend the time: hours to 23, minutes and seconds to 59.');
+    return fault(faults.noTimeOfDay(short(text)), remedies.mendTime);
   const wallMs = end ? ms + 86_400_000 : ms;
   if (w.offsetMin !== null) return { kind: 'instant', at: wallMs / 1000 - w.offsetMin * 60 };
   const [first, second] = instantsOf(wallMs, timeZone);
-  if (first === undefined)
-    return fault(
-      text,
-      `never was: the clock in ${timeZone} was put forward past it`,
-      'Look whether the file is in another time zone, such as UTC.',
-    );
+  if (first === undefined) return fault(faults.neverWas(short(text), timeZone), remedies.otherZone);
   return second === undefined
     ? { kind: 'instant', at: first / 1000 }
     : { kind: 'twice', at: [first / 1000, second / 1000] };

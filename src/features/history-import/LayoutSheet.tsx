@@ -4,7 +4,6 @@ import {
   isQuantity,
   namesRows,
   PLACE_COLUMNS,
-  PLACE_WORDS,
   subjectKey,
   subjectWords,
   type ColumnUse,
@@ -13,6 +12,7 @@ import {
   type PlaceColumn,
   type Subject,
 } from '../../domain/history-import/layout';
+import { PLACE_WORDS } from '../../words/domain-history-import';
 import type { HistoryFacts } from './desk';
 import { isQuantityName, subjectOptions, columnOptions } from './words';
 import { layoutSheet } from '../../words/history-import';

@@ -6,6 +6,7 @@ import { Table } from '../../components/ui/Table';
 import { number } from '../../drawings/numbers';
 import type { CheckedHistory } from './desk';
 import { span } from './words';
+import { QUANTITY_NAMES } from '../../words/domain-history-import';
 import { previewSheet } from '../../words/history-import';
 
 interface Props {
@@ -39,11 +40,18 @@ export function PreviewSheet({ checked, timeZone, busy, onImport }: Props) {
             cell: (s) => (
               <>
                 <span className="font-medium">{s.words}</span>
-                <span className="block text-sm text-ink-2 sm:hidden">{s.quantities.join(', ')}</span>
+                <span className="block text-sm text-ink-2 sm:hidden">
+                  {s.quantities.map((q) => QUANTITY_NAMES[q]).join(', ')}
+                </span>
               </>
             ),
           },
-          { key: 'what', label: previewSheet.what, from: 'sm', cell: (s) => s.quantities.join(', ') },
+          {
+            key: 'what',
+            label: previewSheet.what,
+            from: 'sm',
+            cell: (s) => s.quantities.map((q) => QUANTITY_NAMES[q]).join(', '),
+          },
           { key: 'readings', label: previewSheet.readings, numeric: true, cell: (s) => number(s.readings) },
           {
             key: 'when',

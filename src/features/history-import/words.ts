@@ -9,6 +9,7 @@ import { listed } from '../../drawings/numbers';
 import { longDate } from '../../drawings/times';
 import type { HistoryImportView, HistoryStep } from '../../schemas/api/history-import';
 import type { CheckedHistory } from './desk';
+import { QUANTITY_NAMES } from '../../words/domain-history-import';
 import { historyImportWords } from '../../words/history-import';
 
 export const STEP_WORDS: Record<HistoryStep, string> = {
@@ -89,7 +90,10 @@ export const columnOptions = (places: readonly { value: string; label: string }[
   { value: 'nothing', label: historyImportWords.notUsed },
   ...places,
   ...QUANTITIES.flatMap((q) =>
-    UNITS[q].map(({ unit }) => ({ value: `${q}:${unit}`, label: historyImportWords.qInUnit(q, unit) })),
+    UNITS[q].map(({ unit }) => ({
+      value: `${q}:${unit}`,
+      label: historyImportWords.qInUnit(QUANTITY_NAMES[q], unit),
+    })),
   ),
 ];
 
