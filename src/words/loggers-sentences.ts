@@ -44,11 +44,15 @@ export function finding({ loggers }: LoggersPage, now: Date): { heading: string;
 }
 
 /** "in force", "ends in 23 h", "ended": with the shape that says the same. */
-export function stateWords(token: LoggerTokenView, now: Date): { words: string; shape: string } {
-  if (token.state === 'in_force') return { words: 'in force', shape: '●' };
-  if (token.state === 'ended' || !token.endsAt) return { words: 'ended', shape: '×' };
-  const leftS = (new Date(token.endsAt).getTime() - now.getTime()) / 1000;
-  return leftS <= 0 ? { words: 'ended', shape: '×' } : { words: `ends in ${duration(leftS)}`, shape: '◔' };
+export function stateWords(
+  token: LoggerTokenView,
+  now: Date,
+): { state: LoggerTokenView['state']; words: string; shape: string } {
+  if (token.state === 'in_force') return { state: 'in_force', words: 'in force', shape: '●' };
+  const leftS = token.endsAt ? (new Date(token.endsAt).getTime() - now.getTime()) / 1000 : 0;
+  return token.state === 'ended' || leftS <= 0
+    ? { state: 'ended', words: 'ended', shape: '×' }
+    : { state: 'ending', words: `ends in ${duration(leftS)}`, shape: '◔' };
 }
 
 export const OVERLAP_WORDS: Record<number, string> = {

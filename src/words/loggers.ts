@@ -34,6 +34,7 @@ export const loggerSheet = {
   token: 'Token',
   unnamed: 'without a name',
   lastUsed: 'last used ',
+  never: 'never',
   state: 'State',
   endedBy: (endedBy: string) => ` by ${endedBy}`,
   made: 'Made',

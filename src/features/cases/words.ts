@@ -65,7 +65,7 @@ export function entryWords(entry: CaseEntry): string {
       return casesWords.changedMap(
         changesOf(entry)
           .map((c) =>
-            c.field === 'what is wrong'
+            c.field === casesWords.whatIsWrong
               ? casesWords.whatIsWrong
               : `${c.field}: ${short(c.from)} → ${short(c.to)}`,
           )

@@ -1,6 +1,7 @@
 import { useRef, useState } from 'react';
 import { KIND_WORDS, STAGE_WORDS } from '../../words/domain-reading-stages';
 import { READING_CAUTION } from '../../domain/readings/words';
+import { cautionParts } from '../../components/readings/words';
 import { Button, ButtonLink } from '../../components/ui/Button';
 import { Caution } from '../../components/ui/Caution';
 import { Notice } from '../../components/ui/Notice';
@@ -63,10 +64,10 @@ export function ReadingDetail({ page, row, mayWrite, onChanged, onClose }: Props
       )}
       <div className="mt-4 space-y-3">
         {cautions.map((c) => {
-          const at = c.indexOf(': ');
+          const { strong, rest } = cautionParts(c);
           return (
-            <Caution key={c} strong={`${c.slice(0, at)}.`}>
-              {c.charAt(at + 2).toUpperCase() + c.slice(at + 3)}
+            <Caution key={c} strong={strong}>
+              {rest}
             </Caution>
           );
         })}

@@ -18,11 +18,13 @@ interface Props {
   onEnd: (token: LoggerTokenView) => void;
 }
 
+const TONE = { in_force: 'petrol', ending: 'outline', ended: 'plain' } as const;
+
 /** One logger: whether it is there, its tokens, and what it sent that could not be taken. */
 export function LoggerSheet({ logger, now, timeZone, mayManage, onNew, onEnd }: Props) {
   const at = (time: string | null) =>
-    time ? <SiteTime at={time} now={now.toISOString()} timeZone={timeZone} zone /> : 'never';
-  const alive = logger.tokens.filter((t) => stateWords(t, now).words !== 'ended');
+    time ? <SiteTime at={time} now={now.toISOString()} timeZone={timeZone} zone /> : loggerSheet.never;
+  const alive = logger.tokens.filter((t) => stateWords(t, now).state !== 'ended');
   return (
     <Sheet
       id={`logger-${logger.serial}`}
@@ -71,13 +73,10 @@ export function LoggerSheet({ logger, now, timeZone, mayManage, onNew, onEnd }: 
             key: 'state',
             label: loggerSheet.state,
             cell: (t) => {
-              const { words, shape } = stateWords(t, now);
+              const { state, words, shape } = stateWords(t, now);
               return (
                 <>
-                  <Tag
-                    tone={words === 'ended' ? 'plain' : words === 'in force' ? 'petrol' : 'outline'}
-                    shape={shape}
-                  >
+                  <Tag tone={TONE[state]} shape={shape}>
                     {words}
                   </Tag>
                   {t.endsAt && (
@@ -118,7 +117,7 @@ export function LoggerSheet({ logger, now, timeZone, mayManage, onNew, onEnd }: 
             numeric: true,
             cell: (t) =>
               mayManage &&
-              stateWords(t, now).words !== 'ended' && (
+              stateWords(t, now).state !== 'ended' && (
                 <button
                   type="button"
                   className="target px-1 text-petrol hover:underline"
