@@ -7,7 +7,7 @@ import { BOTH_SIDES, MODULE_TYPES, MONO_430, UNIT_TYPES } from '../../simulator/
 import { layOut } from '../../simulator/scenarios/lay-out';
 import { PLACES, placeAtHour } from '../../simulator/scenarios/places';
 import { CHECKS } from '../../src/domain/commissioning/checks/list';
-import { COLUMN_LABELS } from '../../src/domain/commissioning/import/columns';
+import { COLUMN_LABELS } from '../../src/words/domain-import';
 import type { AsBuilt, PartAdd } from '../../src/schemas/api/as-built';
 import { axeFaults } from '../support/axe';
 import { hydrated, settled, signOnTo, startBrowser } from '../support/browser';

@@ -1,12 +1,12 @@
 import { Choice } from '../../components/ui/Choice';
 import { Sheet } from '../../components/ui/Sheet';
 import {
-  COLUMN_LABELS,
   IMPORT_COLUMNS,
   REQUIRED_COLUMNS,
   type ColumnMatch,
   type ImportColumn,
 } from '../../domain/commissioning/import/columns';
+import { COLUMN_LABELS } from '../../words/domain-import';
 import type { FileFacts } from './desk';
 import { columnsSheet } from '../../words/import';
 

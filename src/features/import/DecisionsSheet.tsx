@@ -1,7 +1,7 @@
 import { Button } from '../../components/ui/Button';
 import { Choice } from '../../components/ui/Choice';
 import { Sheet } from '../../components/ui/Sheet';
-import { COLUMN_LABELS } from '../../domain/commissioning/import/columns';
+import { COLUMN_LABELS } from '../../words/domain-import';
 import {
   bareName,
   inputName,

@@ -1,4 +1,5 @@
-import { COLUMN_LABELS, type ImportColumn } from '../../domain/commissioning/import/columns';
+import type { ImportColumn } from '../../domain/commissioning/import/columns';
+import { COLUMN_LABELS } from '../../words/domain-import';
 import type { Change } from '../../domain/commissioning/import/plan';
 import type { CellFault, FaultCode } from '../../domain/commissioning/import/table';
 import { number } from '../../drawings/numbers';

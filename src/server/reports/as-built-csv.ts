@@ -1,4 +1,5 @@
-import { COLUMN_LABELS, IMPORT_COLUMNS, type ImportColumn } from '../../domain/commissioning/import/columns';
+import { IMPORT_COLUMNS, type ImportColumn } from '../../domain/commissioning/import/columns';
+import { COLUMN_LABELS } from '../../words/domain-import';
 import type { AsBuilt, SlotBuilt, StringBuilt } from '../../schemas/api/as-built';
 import { nameOf } from '../../schemas/as-built-values';
 import { csvResponse, csvText, type Cell, type Column } from './csv';

@@ -1,4 +1,5 @@
 /** Which columns of a file mean what: guessed from their headers and contents, decided by the person. */
+import { COLUMN_LABELS } from '../../../words/domain-import';
 import { readNumber } from './number';
 import { readSerial } from './serial';
 
@@ -23,23 +24,6 @@ export type ImportColumn = (typeof IMPORT_COLUMNS)[number];
 /** Without these a row says nothing about the plant. */
 export const REQUIRED_COLUMNS: readonly ImportColumn[] = ['string', 'position', 'serial'];
 
-export const COLUMN_LABELS: Record<ImportColumn, string> = {
-  string: 'string',
-  position: 'position',
-  serial: 'serial',
-  unitType: 'unit type',
-  moduleType: 'module type',
-  plane: 'plane',
-  inverter: 'inverter',
-  input: 'input',
-  zone: 'zone',
-  logger: 'logger',
-  transmitters: 'transmitters',
-  roofX: 'roof x (m)',
-  roofY: 'roof y (m)',
-  roofPlace: 'place on the roof',
-};
-
 /** Other words for the same, in the languages that drawings come in; compared without case, accents and marks. */
 const SYNONYMS: Record<ImportColumn, readonly string[]> = {
   string:
@@ -54,9 +38,11 @@ const SYNONYMS: Record<ImportColumn, readonly string[]> = {
     'serial number|serial no|serial nr|unit serial|unit serial number|sn|s n|s/n|barcode|bar code|seriennummer|serien nr|numero de serie|no de serie|numero di serie|serienummer|device serial|unit id'.split(
       '|',
     ),
-  unitType: 'type of unit|unit model|electronics|device type|unit'.split('|'),
+  unitType: 'unit type|type of unit|unit model|electronics|device type|unit'.split('|'),
   moduleType:
-    'type of module|module|module model|panel|panel type|panel model|modultyp|modul|pv module'.split('|'),
+    'module type|type of module|module|module model|panel|panel type|panel model|modultyp|modul|pv module'.split(
+      '|',
+    ),
   plane: 'roof plane|roof face|face|array|orientation|dachflache|orientierung|pan|subarray|sub array'.split(
     '|',
   ),
@@ -65,9 +51,9 @@ const SYNONYMS: Record<ImportColumn, readonly string[]> = {
   zone: 'shutdown zone|initiator zone|zona|abschaltzone'.split('|'),
   logger: 'logger serial|data logger|datalogger'.split('|'),
   transmitters: 'transmitter|sender|keep alive transmitter|keep-alive'.split('|'),
-  roofX: 'x|x m|east|easting|roof x|x (m)|col x'.split('|'),
-  roofY: 'y|y m|north|northing|roof y|y (m)'.split('|'),
-  roofPlace: 'roof place|place|location|where|ort|lage|note|remark'.split('|'),
+  roofX: 'x|x m|east|easting|roof x|x (m)|roof x (m)|col x'.split('|'),
+  roofY: 'y|y m|north|northing|roof y|y (m)|roof y (m)'.split('|'),
+  roofPlace: 'place on the roof|roof place|place|location|where|ort|lage|note|remark'.split('|'),
 };
 
 /** A header without case, accents, marks and double blanks. */

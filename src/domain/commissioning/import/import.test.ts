@@ -1,6 +1,7 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import { COLUMN_LABELS, IMPORT_COLUMNS, looksLikeHeader, matchColumns } from './columns';
+import { IMPORT_COLUMNS, looksLikeHeader, matchColumns } from './columns';
+import { COLUMN_LABELS } from '../../../words/domain-import';
 import { nearestName } from './names';
 import { decimalMarkOf, readNumber } from './number';
 import { planImport, type KnownUnit, type StandingSlot } from './plan';

@@ -1,4 +1,5 @@
 /** Numbers as they stand in files of several countries. */
+import { numberSaid } from '../../../words/domain-import';
 
 export type DecimalMark = 'point' | 'comma';
 
@@ -56,7 +57,7 @@ export function decimalMarkOf(texts: Iterable<string>): DecimalMark | null {
 export function readNumber(text: string, mark: DecimalMark | null = null): ReadNumber {
   const bare = plain(text);
   if (bare === '' || bare === '-') return { kind: 'empty' };
-  if (!/^-?[\d.,]*\d[\d.,]*$/.test(bare)) return { kind: 'fault', message: `"${text.trim()}" is no number` };
+  if (!/^-?[\d.,]*\d[\d.,]*$/.test(bare)) return { kind: 'fault', message: numberSaid.noNumber(text.trim()) };
   const own = mark ?? markOf(bare);
   if (own === null) {
     if (bare.includes(','))
@@ -67,10 +68,7 @@ export function readNumber(text: string, mark: DecimalMark | null = null): ReadN
       };
     return { kind: 'number', value: Number(bare) + 0 };
   }
-  const twoMarks: ReadNumber = {
-    kind: 'fault',
-    message: `"${text.trim()}" has marks that don't fit one number`,
-  };
+  const twoMarks: ReadNumber = { kind: 'fault', message: numberSaid.marks(text.trim()) };
   const [decimal, thousands, grouped] =
     own === 'point' ? (['.', ',', GROUPED_COMMA] as const) : ([',', '.', GROUPED_POINT] as const);
   if (bare.includes(thousands) && !grouped.test(bare)) return twoMarks;

@@ -1,4 +1,5 @@
 /** What an import would change: the file, as read, beside the as-built as it stands. */
+import { importSaid } from '../../../words/domain-import';
 import type { CellFault, KnownString, NewString, ReadRow } from './table';
 
 /** A slot as it stands. */
@@ -122,17 +123,16 @@ function unitFault(row: ReadRow, unit: KnownUnit, stringType: string | undefined
       code: 'serial_elsewhere',
       message:
         unit.at.site === null
-          ? `${row.serial} sits on another site, which you don't see`
-          : `${row.serial} sits on ${unit.at.site}, ${unit.at.string}, position ${unit.at.position}`,
-      remedy: 'Take it out of the as-built there first, or read the label again.',
+          ? importSaid.elsewhereUnseen(unit.serial)
+          : importSaid.elsewhere(unit.serial, unit.at.site, unit.at.string, unit.at.position),
+      remedy: importSaid.elsewhereRemedy,
     };
   if (stringType !== undefined && stringType !== unit.unitType)
     return {
       ...fault,
       code: 'serial_type',
-      message: `${row.serial} is on record as ${unit.unitType}, and ${row.string} is a string of ${stringType}`,
-      remedy:
-        'Read the label again. If the record is wrong, correct the unit type on the as-built page first.',
+      message: importSaid.serialType(unit.serial, unit.unitType, row.string, stringType),
+      remedy: importSaid.serialTypeRemedy,
     };
   return undefined;
 }

@@ -1,5 +1,6 @@
 /** A whole import read against the names of a site. The browser does it while the person looks, the server anew. */
-import { COLUMN_LABELS, fitOf, type ImportColumn } from './columns';
+import { importSaid } from '../../../words/domain-import';
+import { fitOf, type ImportColumn } from './columns';
 import { Faults, readRows, type RawRow } from './read-rows';
 import {
   byString,
@@ -30,8 +31,8 @@ function doubtfulColumns(table: ImportTable, faults: CellFault[]): CellFault[] {
       row: table.lines[0] ?? 1,
       column,
       code: 'column_doubtful',
-      message: `hardly a cell of the column chosen as ${COLUMN_LABELS[column]} looks like one ("${sample.slice(0, 40)}")`,
-      remedy: 'Choose another column for it above.',
+      message: importSaid.columnDoubtful(column, sample.slice(0, 40)),
+      remedy: importSaid.columnDoubtfulRemedy,
       suggestion: null,
       weight: 'fault',
     });
@@ -49,14 +50,14 @@ function checkSerials(rows: readonly RawRow[], faults: Faults): void {
       first.set(row.serial, row);
       continue;
     }
-    const where =
-      before.string === undefined ? '' : ` (${before.string}, position ${before.position ?? '?'})`;
     faults.add(
       row.line,
       'serial',
       'serial_double',
-      `${row.serial} is in row ${before.line} already${where}`,
-      'A unit sits in one place. Read the label at one of the two, and correct it.',
+      before.string === undefined
+        ? importSaid.serialTwice(row.serial, before.line)
+        : importSaid.serialTwiceAt(row.serial, before.line, before.string, before.position),
+      importSaid.serialTwiceRemedy,
     );
   }
 }
@@ -79,8 +80,8 @@ function noteUnlike(rows: readonly RawRow[], faults: Faults): void {
         line,
         'serial',
         'serial_unlike',
-        `${serial} has ${serial.length} characters, nearly all others have ${usual}`,
-        'Compare with the label on the unit. If it is right, nothing needs to be done.',
+        importSaid.serialUnlike(serial, serial.length, usual),
+        importSaid.serialUnlikeRemedy,
         { weight: 'note' },
       );
 }
@@ -94,10 +95,8 @@ function checkTypes(group: StringRows, typeOf: string | undefined, faults: Fault
       other.line,
       'unitType',
       'unit_types_mixed',
-      `${group.name} is a string of ${typeOf}, the file has ${other.unitType} in it`,
-      group.known
-        ? 'If the file is right, change the unit type of the string on the as-built page first.'
-        : 'A string has one unit type. Correct the type, or the name of the string.',
+      importSaid.typesMixed(group.name, typeOf, other.unitType),
+      group.known ? importSaid.typesMixedKnown : importSaid.typesMixedNew,
       { suggestion: typeOf },
     );
 }

@@ -1,6 +1,6 @@
 /** The cells of an import one by one: numbers, serials, names. What belongs to whole strings is in read-strings. */
+import { importCellSaid } from '../../../words/domain-import';
 import type { ImportColumn } from './columns';
-import { COLUMN_LABELS } from './columns';
 import { NameBook, nearestName } from './names';
 import { decimalMarkOf, readNumber, type DecimalMark } from './number';
 import { readSerial } from './serial';
@@ -77,13 +77,18 @@ function readPosition(text: string, line: number, faults: Faults): number | unde
     return undefined;
   };
   const read = readNumber(text.replace(/^\s*(?:pos(?:ition)?|no|nr|#)\.?\s*(?=\d)/i, ''));
-  const range = `Positions count from 1 at the negative end to ${POSITION_MAX}.`;
-  if (read.kind === 'empty') return add('position_empty', 'the position is empty', range);
+  const range = importCellSaid.positionRange(POSITION_MAX);
+  if (read.kind === 'empty') return add('position_empty', importCellSaid.positionEmpty, range);
   if (read.kind === 'fault') return add('position_number', read.message, range);
   const value = read.kind === 'ambiguous' ? read.asThousands : read.value;
-  if (!Number.isInteger(value)) return add('position_number', `"${text.trim()}" is no whole number`, range);
+  if (!Number.isInteger(value))
+    return add('position_number', importCellSaid.positionNotWhole(text.trim()), range);
   if (value < 1 || value > POSITION_MAX)
-    return add('position_range', `position ${value} can't be`, `${range} Is this the right column?`);
+    return add(
+      'position_range',
+      importCellSaid.positionImpossible(value),
+      importCellSaid.positionImpossibleRemedy(POSITION_MAX),
+    );
   return value;
 }
 
@@ -97,7 +102,7 @@ function readRoof(
   const read = readNumber(text.replace(/\s*m$/i, ''), mark);
   if (read.kind === 'empty') return null;
   if (read.kind === 'fault') {
-    faults.add(line, column, 'number_fault', read.message, 'Write metres as a number, like 12.5.');
+    faults.add(line, column, 'number_fault', read.message, importCellSaid.metresRemedy);
     return undefined;
   }
   if (read.kind === 'ambiguous') {
@@ -105,8 +110,8 @@ function readRoof(
       line,
       column,
       'number_ambiguous',
-      `"${text.trim()}" could be ${read.asDecimal} or ${read.asThousands}`,
-      'Say above which mark stands before the decimals in this file.',
+      importCellSaid.ambiguous(text.trim(), read.asDecimal, read.asThousands),
+      importCellSaid.ambiguousRemedy,
     );
     return undefined;
   }
@@ -115,8 +120,8 @@ function readRoof(
       line,
       column,
       'number_fault',
-      `${read.value} m is no place on a roof`,
-      'Metres from one corner of the roof are expected; is this the right column?',
+      importCellSaid.offRoof(read.value),
+      importCellSaid.offRoofRemedy,
     );
     return undefined;
   }
@@ -149,27 +154,23 @@ class InputBook {
     const whole = text.includes('/') ? this.whole.get(bareName(text).replace(/\s*\/\s*/, '/')) : undefined;
     if (whole && (inverter === null || inverter === whole.inverter)) return whole;
     const owner = inverter ?? (this.inverters.length === 1 ? this.inverters[0] : undefined);
-    if (owner === undefined)
-      return this.told(`input "${text}" names no inverter, and the site has several`, owner, line, faults);
+    if (owner === undefined) return this.told(importCellSaid.inputWhose(text), owner, line, faults);
     const number = /(\d+)\s*$/.exec(text)?.[1];
     const found = number === undefined ? undefined : this.byNumber.get(inputName(owner, Number(number)));
-    return found ?? this.told(`${owner} has no input "${text}"`, owner, line, faults);
+    return found ?? this.told(importCellSaid.noInput(owner, text), owner, line, faults);
   }
 
   private told(message: string, owner: string | undefined, line: number, faults: Faults): undefined {
     const listed = this.inputs
       .filter((i) => owner === undefined || i.inverter === owner)
       .slice(0, 8)
-      .map((i) => inputName(i.inverter, i.number))
-      .join(', ');
+      .map((i) => inputName(i.inverter, i.number));
     faults.add(
       line,
       'input',
       'name_unknown',
       message,
-      listed
-        ? `Inputs here: ${listed}. Add others on the as-built page.`
-        : 'Enter the inverter and its inputs on the as-built page first.',
+      listed.length > 0 ? importCellSaid.inputsHere(listed) : importCellSaid.noInputsHere,
     );
   }
 }
@@ -208,17 +209,18 @@ export function readRows(
       if (found !== undefined) return found;
       const known = books[c].names;
       const suggestion = nearestName(text, known);
-      const some = known.slice(0, 5).join(', ');
+      const none =
+        c === 'unitType' || c === 'moduleType' ? importCellSaid.noneInCatalogue : importCellSaid.noneOnSite;
       faults.add(
         line,
         c,
         'name_unknown',
-        `there is no ${COLUMN_LABELS[c].replace(/s$/, '')} "${text}"`,
+        importCellSaid.noSuch(c, text),
         suggestion
-          ? `Is "${suggestion}" meant?`
-          : some
-            ? `Known: ${some}${known.length > 5 ? ` and ${known.length - 5} more` : ''}. Say above which one is meant.`
-            : `None is entered yet. Enter it on the ${c === 'unitType' || c === 'moduleType' ? 'equipment' : 'as-built'} page first.`,
+          ? importCellSaid.isMeant(suggestion)
+          : known.length > 0
+            ? importCellSaid.known(known.slice(0, 5), known.length - 5)
+            : none,
         { suggestion },
       );
       return undefined;
@@ -231,8 +233,8 @@ export function readRows(
           line,
           'string',
           'string_empty',
-          'the string is empty',
-          above ? 'Enter its name, or say above that blank cells mean the string above.' : 'Enter its name.',
+          importCellSaid.stringEmpty,
+          above ? importCellSaid.stringEmptyBelow : importCellSaid.stringEmptyRemedy,
           { suggestion: above || null },
         );
         return undefined;
@@ -243,8 +245,8 @@ export function readRows(
           line,
           'string',
           'string_name',
-          `the name has ${text.length} characters`,
-          'A string has a name of at most 40, like B3. Is this the right column?',
+          importCellSaid.nameLong(text.length),
+          importCellSaid.nameLongRemedy,
         );
         return undefined;
       }
@@ -266,8 +268,8 @@ export function readRows(
         line,
         'roofPlace',
         'text_long',
-        `the place has ${place.length} characters`,
-        `Say it in at most ${PLACE_MAX}.`,
+        importCellSaid.placeLong(place.length),
+        importCellSaid.placeLongRemedy(PLACE_MAX),
       );
     const inverter = named('inverter');
     const senders = cell('transmitters')

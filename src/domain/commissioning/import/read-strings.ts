@@ -1,5 +1,6 @@
 /** What the rows of one string say together: positions without gaps, one plane, one input, enough to make it. */
-import { COLUMN_LABELS, type ImportColumn } from './columns';
+import { importStringSaid } from '../../../words/domain-import';
+import type { ImportColumn } from './columns';
 import type { Faults, RawRow } from './read-rows';
 import {
   bareName,
@@ -42,8 +43,8 @@ export function checkPositions({ name, known, rows }: StringRows, faults: Faults
         row.line,
         'position',
         'position_double',
-        `position ${row.position} of ${name} is in row ${before} already`,
-        'One of the two is another position or another string.',
+        importStringSaid.positionTwice(row.position, name, before),
+        importStringSaid.positionTwiceRemedy,
       );
   }
   const last = Math.max(0, ...first.keys());
@@ -60,9 +61,9 @@ export function checkPositions({ name, known, rows }: StringRows, faults: Faults
       'position',
       'position_missing',
       known
-        ? `${name} has ${known.slots} positions, and ${spans(missing)} would be missing before ${last}`
-        : `${name} has no position ${spans(missing)}`,
-      'Add the missing rows (the serial may stay empty until the unit is there), or correct the position.',
+        ? importStringSaid.positionsMissingKnown(name, known.slots, spans(missing), last)
+        : importStringSaid.positionsMissing(name, spans(missing)),
+      importStringSaid.positionsMissingRemedy,
     );
 }
 
@@ -109,8 +110,8 @@ function contradiction(
     line,
     column,
     'string_contradicts',
-    `${group.name} is on ${COLUMN_LABELS[column]} "${before}" in a row above and on "${now}" here`,
-    `A string has one ${COLUMN_LABELS[column]}. Correct one of the two, or the name of the string.`,
+    importStringSaid.contradicts(group.name, column, before, now),
+    importStringSaid.contradictsRemedy(column),
   );
 }
 
@@ -143,8 +144,8 @@ export function checkKnown(group: StringRows, faults: Faults): void {
       line,
       column,
       'string_differs',
-      `${name} is on ${COLUMN_LABELS[column]} "${is ?? 'none'}" in the as-built, the file says "${said}"`,
-      'If the file is right, change the string on the as-built page first; otherwise correct the file.',
+      importStringSaid.differs(name, column, is, said),
+      importStringSaid.differsRemedy,
       { suggestion: is },
     );
   };
@@ -191,10 +192,8 @@ export function readNewString(
       line,
       'string',
       'string_unknown',
-      `there is no string "${name}" here yet`,
-      near
-        ? `Is "${near.name}" meant? Or say above what new strings are made with.`
-        : 'Say above what new strings are made with, or correct the name.',
+      importStringSaid.unknown(name),
+      near ? importStringSaid.unknownNear(near.name) : importStringSaid.unknownRemedy,
       { suggestion: near?.name ?? null },
     );
     return undefined;
@@ -204,8 +203,8 @@ export function readNewString(
       line,
       column,
       'string_incomplete',
-      `new string ${name} has no ${COLUMN_LABELS[column]}`,
-      'Choose one for all new strings above, or give it in the file.',
+      importStringSaid.incomplete(name, column),
+      importStringSaid.incompleteRemedy,
     );
     return undefined;
   };
@@ -235,8 +234,8 @@ export function readNewString(
         line,
         'input',
         'string_incomplete',
-        `no input without a string is left for ${name}`,
-        'Add inputs on the as-built page, or choose one input for all new strings.',
+        importStringSaid.noInputLeft(name),
+        importStringSaid.noInputLeftRemedy,
       );
     else missing('input');
   }

@@ -1,4 +1,5 @@
 /** A unit's serial as people type, scan and paste it. */
+import { serialSaid } from '../../../words/domain-import';
 
 export type ReadSerial =
   | { kind: 'serial'; serial: string }
@@ -37,44 +38,19 @@ export function readSerial(text: string): ReadSerial {
     suggestion: suggestion !== null && SERIAL.test(suggestion) ? suggestion : null,
   });
   if (/^\d(?:[.,]\d+)?E\+?\d+$/.test(bare))
-    return fault(
-      `"${bare}" is a serial that the spreadsheet has turned into a number`,
-      'Its digits are lost. Set the column to text in the spreadsheet, enter the serials again and export once more.',
-    );
+    return fault(serialSaid.turnedNumber(bare), serialSaid.turnedNumberRemedy);
   if (/^\d+[.,]0+$/.test(bare))
-    return fault(
-      `"${bare}" has decimals`,
-      'Set the column to text in the spreadsheet.',
-      bare.replace(/[.,]0+$/, ''),
-    );
+    return fault(serialSaid.decimals(bare), serialSaid.decimalsRemedy, bare.replace(/[.,]0+$/, ''));
   if (/^HTTPS?:\/\//.test(bare)) {
     const last = bare.split(/[/?=&#]/).findLast((part) => SERIAL.test(part) && /\d/.test(part));
-    return fault(
-      'it is a web address',
-      'The code on the label carries an address; type the serial beside it.',
-      last ?? null,
-    );
+    return fault(serialSaid.address, serialSaid.addressRemedy, last ?? null);
   }
   const joined = bare.replace(/\s+/g, '').replace(DASHES, '-').replace(/^-+/, '');
   const strange = [...new Set(bare.match(/[^A-Z0-9\s-]/gu) ?? [])].slice(0, 4).join(' ');
-  if (joined.length > 32)
-    return fault(
-      `it has ${joined.length} characters`,
-      'Serials have 4 to 32. Is this one serial, and the right column?',
-    );
+  if (joined.length > 32) return fault(serialSaid.long(joined.length), serialSaid.longRemedy);
   if (joined.replace(/[^A-Z0-9-]/g, '').length < 4)
-    return fault(`"${bare}" is too short`, 'Serials have 4 to 32 letters, digits and dashes.');
-  if (/\s/.test(bare) && strange === '')
-    return fault('it has blanks in it', 'Type it without blanks, or check that it is one serial.', joined);
-  if (strange !== '')
-    return fault(
-      `it has ${strange} in it`,
-      'Serials are letters A to Z, digits and dashes. Compare with the label on the unit.',
-      joined,
-    );
-  return fault(
-    `"${bare}" is no serial`,
-    'Serials are 4 to 32 letters, digits and dashes and begin with a letter or digit.',
-    joined,
-  );
+    return fault(serialSaid.short(bare), serialSaid.shortRemedy);
+  if (/\s/.test(bare) && strange === '') return fault(serialSaid.blanks, serialSaid.blanksRemedy, joined);
+  if (strange !== '') return fault(serialSaid.strange(strange), serialSaid.strangeRemedy, joined);
+  return fault(serialSaid.noSerial(bare), serialSaid.noSerialRemedy, joined);
 }
