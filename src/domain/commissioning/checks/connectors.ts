@@ -1,11 +1,12 @@
+import { matedPlaceSaid } from '../../../words/domain-check-figures';
 import { connectorPairFinding } from '../../equipment/connectors';
 import type { CheckContext, Figures } from './definition';
 import type { FigureWord } from './figure-word';
 
 /** The places where a string's connectors of two types may meet, as keys of the check's figures. */
 export const MATED_PLACES = [
-  { first: 'moduleLead', second: 'unitInput', where: 'Between module and unit' },
-  { first: 'unitOutput', second: 'homeRun', where: 'Between string and home run' },
+  { first: 'moduleLead', second: 'unitInput', place: 'moduleToUnit' },
+  { first: 'unitOutput', second: 'homeRun', place: 'stringToHomeRun' },
 ] as const;
 
 /**
@@ -14,7 +15,7 @@ export const MATED_PLACES = [
  */
 export function connectorFigures(figures: Figures, context: CheckContext): FigureWord[] {
   const identity = (key: string) => context.connectors.find((c) => c.id === figures[key]) ?? null;
-  return MATED_PLACES.flatMap(({ first, second, where }): FigureWord[] => {
+  return MATED_PLACES.flatMap(({ first, second, place }): FigureWord[] => {
     const a = identity(first);
     const b = identity(second);
     if (first !== 'moduleLead' && !a && !b) return [];
@@ -23,7 +24,7 @@ export function connectorFigures(figures: Figures, context: CheckContext): Figur
       return [
         {
           weight: 'blocks',
-          words: `${where}: ${found.words}`,
+          words: matedPlaceSaid[place](found.words),
           remedy: found.remedy,
           source: found.clause,
           fireRisk: found.outcome === 'not_documented',
@@ -33,7 +34,7 @@ export function connectorFigures(figures: Figures, context: CheckContext): Figur
       ? [
           {
             weight: 'told',
-            words: `${where}: ${found.words} ${found.evidence ?? ''}`.trim(),
+            words: matedPlaceSaid[place](`${found.words} ${found.evidence ?? ''}`.trim()),
             remedy: null,
             source: found.clause,
           },

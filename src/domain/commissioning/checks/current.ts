@@ -1,3 +1,4 @@
+import { checkCurrentSaid } from '../../../words/domain-check-figures';
 import { numberOf, wordOf, written, type FigureWord } from './figure-word';
 import type { CheckContext, CheckStanding, SiblingCurrent } from './definition';
 
@@ -5,8 +6,6 @@ import type { CheckContext, CheckStanding, SiblingCurrent } from './definition';
 
 /** Share from the average within which identical strings lie under stable irradiance. */
 export const CURRENT_SPREAD = 0.05;
-export const CURRENT_SOURCE =
-  'IEC 62446:2009, clause 5.4.5, as quoted by others: within 5 % of the average under stable irradiance';
 /** Neighbours count when they were measured this close in time, s; their light within this share, where both are known. */
 const SAME_LIGHT_S = 1800;
 const SAME_LIGHT_SHARE = 0.05;
@@ -45,13 +44,9 @@ export function currentWords(standing: CheckStanding, context: CheckContext): Fi
     return [
       {
         weight: 'blocks',
-        words:
-          current < 0
-            ? `${written(current)} A: current flows the wrong way round, or the clamp is turned.`
-            : 'No current flows.',
-        remedy:
-          'Turn the clamp as its arrow says; then look for an open connector or a string that is not released.',
-        source: CURRENT_SOURCE,
+        words: current < 0 ? checkCurrentSaid.backwards(written(current)) : checkCurrentSaid.none,
+        remedy: checkCurrentSaid.noneRemedy,
+        source: checkCurrentSaid.source,
       },
     ];
   // optimizing units set their own output: neither neighbours nor the sheet say what it should be
@@ -64,9 +59,14 @@ export function currentWords(standing: CheckStanding, context: CheckContext): Fi
     if (Math.abs(off) > CURRENT_SPREAD)
       words.push({
         weight: 'told',
-        words: `${written(current)} A is ${Math.abs(Math.round(off * 100))} % ${off < 0 ? 'below' : 'above'} the average of ${others.length + 1} strings measured with it (${written(average)} A).`,
-        remedy: 'Measure these strings again, one after the other, while the light is steady.',
-        source: CURRENT_SOURCE,
+        words: (off < 0 ? checkCurrentSaid.below : checkCurrentSaid.above)(
+          written(current),
+          Math.abs(Math.round(off * 100)),
+          others.length + 1,
+          written(average),
+        ),
+        remedy: checkCurrentSaid.apartRemedy,
+        source: checkCurrentSaid.source,
       });
   }
   const sheet = sheetCurrent(
@@ -77,9 +77,9 @@ export function currentWords(standing: CheckStanding, context: CheckContext): Fi
   if (sheet !== null && Math.abs(current / sheet - 1) > SHEET_SPREAD)
     words.push({
       weight: 'told',
-      words: `${written(current)} A is far from the ${written(Number(sheet.toFixed(1)))} A that the datasheet gives at this irradiance.`,
-      remedy: 'Check the irradiance, shade, and whether the inverter holds the string back.',
-      source: 'module datasheet scaled by irradiance; ±15 % is a rule of our own',
+      words: checkCurrentSaid.offSheet(written(current), written(Number(sheet.toFixed(1)))),
+      remedy: checkCurrentSaid.offSheetRemedy,
+      source: checkCurrentSaid.offSheetSource,
     });
   return words;
 }

@@ -1,5 +1,6 @@
+import { checkFigureFaults } from '../../../words/domain-check-figures';
 import { checkDefinition } from './list';
-import type { CheckKey, CheckResult, Figure, Figures, FigureValue } from './definition';
+import type { CheckKey, CheckResult, Figures, FigureValue } from './definition';
 
 /** What was typed or chosen for a check, held against what the check takes. */
 
@@ -9,9 +10,6 @@ export interface FigureFault {
   /** What was wrong and what would do. */
   message: string;
 }
-
-const span = (f: Extract<Figure, { kind: 'number' }>): string =>
-  `${f.min} to ${f.max} ${f.unit}`.replace('-', '−');
 
 /**
  * Faults of `figures` as the figures of `check`: unknown keys, values outside their range, and what a pass needs and
@@ -28,26 +26,29 @@ export function figureFaults(
   const fault = (figure: string, message: string) => faults.push({ figure, message });
   for (const key of Object.keys(figures))
     if (!definition.figures.some((f) => f.key === key))
-      fault(key, `${definition.name} takes no figure of this name. Leave it out.`);
+      fault(key, checkFigureFaults.unknown(definition.name));
   for (const f of definition.figures) {
     const value: FigureValue | undefined = Object.hasOwn(figures, f.key) ? figures[f.key] : undefined;
     if (value === undefined) {
-      if (result === 'pass' && f.needed)
-        fault(f.key, `${f.name} is missing. ${definition.name} can only pass with it.`);
+      if (result === 'pass' && f.needed) fault(f.key, checkFigureFaults.missing(f.name, definition.name));
       continue;
     }
     if (f.kind === 'number' && !(typeof value === 'number' && value >= f.min && value <= f.max))
-      fault(f.key, `${f.name}: ${String(value)} is not possible. Give a number from ${span(f)}.`);
+      fault(
+        f.key,
+        checkFigureFaults.impossible(f.name, String(value), checkFigureFaults.span(f.min, f.max, f.unit)),
+      );
     if (f.kind === 'choice' && !f.options.some((o) => o.value === value))
       fault(
         f.key,
-        `${f.name}: ${String(value)} is none of the choices. Give one of ${f.options.map((o) => o.value).join(', ')}.`,
+        checkFigureFaults.noChoice(
+          f.name,
+          String(value),
+          f.options.map((o) => o.value),
+        ),
       );
     if (f.kind === 'connector' && !(typeof value === 'string' && knows(value)))
-      fault(
-        f.key,
-        `${f.name}: this connector type is not in the catalogue. Choose one that is, or enter it first.`,
-      );
+      fault(f.key, checkFigureFaults.noConnector(f.name));
   }
   return faults;
 }

@@ -1,3 +1,4 @@
+import { insulationSaid } from '../../../words/domain-checks';
 import type { CheckContext } from './definition';
 
 /**
@@ -11,8 +12,6 @@ const TABLE = [
   { belowV: 500, testV: 500, leastMohm: 1 },
   { belowV: Infinity, testV: 1000, leastMohm: 1 },
 ] as const;
-export const INSULATION_SOURCE = 'IEC 62446-1, clause 6.7 and Table 2 as quoted by others';
-export const LEAST_RESISTANCE_SOURCE = 'IEC 62446-1 Table 2, from memory: look it up in your edition';
 
 export interface InsulationTable {
   /** 1.25 · voc of the string at STC, V. */
@@ -48,10 +47,10 @@ export function insulationTest(context: Pick<CheckContext, 'unitType' | 'module'
   if (allowedV === null)
     return {
       allowed: false,
-      words: `The maker of ${unitType.name} allows no insulation test through the units, according to the type entered. Do not apply a test voltage to this string.`,
-      warning: 'No insulation test here: it can destroy the units.',
-      reason: 'The maker of the units allows none.',
-      source: 'unit type as entered',
+      words: insulationSaid.noneAllowed(unitType.name),
+      warning: insulationSaid.noneAllowedWarning,
+      reason: insulationSaid.noneAllowedReason,
+      source: insulationSaid.unitTypeSource,
     };
   const table = insulationTable(units, module.vocRef);
   const short = allowedV < table.testVoltage;
@@ -59,10 +58,8 @@ export function insulationTest(context: Pick<CheckContext, 'unitType' | 'module'
     allowed: true,
     table,
     allowedV,
-    words: `At most ${allowedV} V through ${unitType.name}, according to the type entered; the table asks for ${table.testVoltage} V at a system voltage of ${Math.round(table.systemVoltage)} V.`,
-    warning: short
-      ? `Stay at ${allowedV} V or below: more can destroy the units.`
-      : 'Units in shutdown hide what lies behind them: record their state.',
-    source: INSULATION_SOURCE,
+    words: insulationSaid.atMost(allowedV, unitType.name, table.testVoltage, Math.round(table.systemVoltage)),
+    warning: short ? insulationSaid.stayBelow(allowedV) : insulationSaid.shutdownHides,
+    source: insulationSaid.tableSource,
   };
 }

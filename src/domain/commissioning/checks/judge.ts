@@ -1,10 +1,11 @@
+import { checkFiguresSaid } from '../../../words/domain-check-figures';
 import { earthFinding } from '../../readings/earth';
 import { ORDINARY_METER } from '../../readings/reading';
 import { connectorFigures } from './connectors';
 import { currentWords } from './current';
 import { numberOf, wordOf, written, type FigureWord } from './figure-word';
 import { checkDefinition } from './list';
-import { LEAST_RESISTANCE_SOURCE, insulationTest } from './insulation';
+import { insulationTest } from './insulation';
 import type { CheckContext, CheckJudgement, CheckStanding, Figures } from './definition';
 
 /** Common practice, no published limit is held here: said so wherever it is used. */
@@ -27,7 +28,7 @@ export function judgeCheck(standing: CheckStanding, context: CheckContext): Chec
     contradicts,
     fireRisk: words.some((w) => w.fireRisk === true),
     words: told.map((w) => w.words),
-    remedy: first?.remedy ?? (failed ? 'Put it right, then record the check again.' : null),
+    remedy: first?.remedy ?? (failed ? checkFiguresSaid.putRight : null),
     source: first?.source ?? definition.source,
   };
 }
@@ -40,9 +41,9 @@ function figureWords(standing: CheckStanding, context: CheckContext): FigureWord
         ? [
             {
               weight: 'blocks',
-              words: 'Leads leave a unit upwards: water runs along them into the housing.',
-              remedy: 'Turn the unit so that its leads go down or to a side.',
-              source: 'common practice',
+              words: checkFiguresSaid.leadsUp,
+              remedy: checkFiguresSaid.leadsUpRemedy,
+              source: checkFiguresSaid.leadsUpSource,
             },
           ]
         : [];
@@ -51,9 +52,9 @@ function figureWords(standing: CheckStanding, context: CheckContext): FigureWord
         ? [
             {
               weight: 'blocks',
-              words: `The label looks at the back sheet; ${context.unitType.name} allows it only the other way, according to the type entered.`,
-              remedy: 'Turn the unit over, or correct the type if its sheet allows either face.',
-              source: 'unit type as entered',
+              words: checkFiguresSaid.labelIn(context.unitType.name),
+              remedy: checkFiguresSaid.labelInRemedy,
+              source: checkFiguresSaid.labelInSource,
             },
           ]
         : [];
@@ -62,9 +63,9 @@ function figureWords(standing: CheckStanding, context: CheckContext): FigureWord
         ? [
             {
               weight: 'blocks',
-              words: `${context.emptySlots} of ${context.units} slots ${context.emptySlots === 1 ? 'has' : 'have'} no serial on the as-built.`,
-              remedy: 'Read the serials on the roof, or import them.',
-              source: 'as-built',
+              words: checkFiguresSaid.noSerial(context.emptySlots, context.units),
+              remedy: checkFiguresSaid.noSerialRemedy,
+              source: checkFiguresSaid.noSerialSource,
             },
           ]
         : [];
@@ -91,9 +92,9 @@ const reversed = (voltage: number | null): FigureWord[] =>
     ? [
         {
           weight: 'blocks',
-          words: `${written(voltage)} V: the string is reversed at the meter or at its leads. Do not connect it.`,
-          remedy: 'Check the leads at the meter first, then the marking of the home run; measure again.',
-          source: 'IEC 62446-1, clause 6.2',
+          words: checkFiguresSaid.reversed(written(voltage)),
+          remedy: checkFiguresSaid.reversedRemedy,
+          source: checkFiguresSaid.reversedSource,
         },
       ]
     : [];
@@ -103,10 +104,9 @@ const continuity = (resistance: number | null): FigureWord[] =>
     ? [
         {
           weight: 'told',
-          words: `${written(resistance)} Ω is above the ${CONTINUITY_MOST_OHM} Ω that is common practice.`,
-          remedy:
-            'Take off the resistance of the test leads, clean the joint and measure again; local rules decide.',
-          source: 'common practice; local rules decide',
+          words: checkFiguresSaid.continuity(written(resistance), CONTINUITY_MOST_OHM),
+          remedy: checkFiguresSaid.continuityRemedy,
+          source: checkFiguresSaid.continuitySource,
         },
       ]
     : [];
@@ -130,10 +130,8 @@ function toEarth(figures: Figures, context: CheckContext): FigureWord[] {
       weight: found.outcome === 'fault' ? 'blocks' : 'told',
       words: found.words,
       remedy:
-        found.outcome === 'fault'
-          ? 'Find the place where a conductor touches earth before anything is energised.'
-          : 'Measure again, high-impedance input, and wait until each reading settles.',
-      source: 'common practice',
+        found.outcome === 'fault' ? checkFiguresSaid.earthFaultRemedy : checkFiguresSaid.earthUnclearRemedy,
+      source: checkFiguresSaid.earthSource,
     });
   return words;
 }
@@ -148,7 +146,7 @@ function insulation(figures: Figures, context: CheckContext): FigureWord[] {
     words.push({
       weight: 'blocks',
       words: test.words,
-      remedy: 'Record it as not applicable; have the units looked at if a test voltage was applied.',
+      remedy: checkFiguresSaid.testedAnywayRemedy,
       source: test.source,
     });
     return words;
@@ -156,30 +154,30 @@ function insulation(figures: Figures, context: CheckContext): FigureWord[] {
   if (test.allowed && !bypassed && volts > test.allowedV)
     words.push({
       weight: 'blocks',
-      words: `${volts} V is more than the ${test.allowedV} V that the maker of ${context.unitType.name} allows: the units may be damaged.`,
-      remedy: 'Have the units looked at, and test again with the voltage that is allowed.',
-      source: 'unit type as entered',
+      words: checkFiguresSaid.testVoltageHigh(volts, test.allowedV, context.unitType.name),
+      remedy: checkFiguresSaid.testVoltageHighRemedy,
+      source: checkFiguresSaid.testVoltageHighSource,
     });
   if (test.allowed && resistance !== null && resistance < test.table.leastResistanceMohm)
     words.push({
       weight: 'blocks',
-      words: `${written(resistance)} MΩ is below ${test.table.leastResistanceMohm} MΩ.`,
-      remedy: 'Look for damaged insulation and moisture, part the array and measure its parts.',
-      source: LEAST_RESISTANCE_SOURCE,
+      words: checkFiguresSaid.insulationLow(written(resistance), test.table.leastResistanceMohm),
+      remedy: checkFiguresSaid.insulationLowRemedy,
+      source: checkFiguresSaid.insulationLowSource,
     });
   if (test.allowed && volts > 0 && volts < test.table.testVoltage)
     words.push({
       weight: 'told',
-      words: `${volts} V is less than the ${test.table.testVoltage} V that the table asks for at this string’s voltage.`,
+      words: checkFiguresSaid.testVoltageLow(volts, test.table.testVoltage),
       remedy: null,
       source: test.source,
     });
   if (wordOf(figures, 'unitsState') === 'shutdown')
     words.push({
       weight: 'told',
-      words: 'The units were in shutdown: what lies behind them was not tested.',
+      words: checkFiguresSaid.testedInShutdown,
       remedy: null,
-      source: 'common practice',
+      source: checkFiguresSaid.testedInShutdownSource,
     });
   return words;
 }

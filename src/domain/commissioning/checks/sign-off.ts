@@ -1,3 +1,4 @@
+import { checkFiguresSaid, signOffSaid } from '../../../words/domain-check-figures';
 import { checksFor } from './list';
 import { judgeCheck } from './judge';
 import { CHECK_KEYS, type CheckContext, type CheckKey, type CheckStanding } from './definition';
@@ -30,14 +31,14 @@ export function signOffState(records: readonly CheckStanding[], context: CheckCo
   for (const check of asked) {
     const record = records.find((r) => r.check === check.key);
     if (!record) {
-      if (check.mayFollow) remarks.push(`${check.name}: not recorded yet; it may follow once current flows.`);
+      if (check.mayFollow) remarks.push(signOffSaid.mayFollow(check.name));
       else
         blocks.push({
           check: check.key,
           kind: 'missing',
-          words: `${check.name} is not recorded.`,
+          words: signOffSaid.missing(check.name),
           remedy: check.offersNotApplicable
-            ? `Record it as not applicable: ${check.offersNotApplicable}`
+            ? signOffSaid.recordNotApplicable(check.offersNotApplicable)
             : check.how,
         });
       continue;
@@ -49,11 +50,11 @@ export function signOffState(records: readonly CheckStanding[], context: CheckCo
         kind: record.result === 'fail' ? 'failed' : judged.fireRisk ? 'fire_risk' : 'contradicted',
         words:
           judged.words.length > 0
-            ? `${check.name}: ${judged.words.join(' ')}`
-            : `${check.name} failed${record.reason ? `: ${record.reason}` : '.'}`,
-        remedy: judged.remedy ?? 'Put it right, then record the check again.',
+            ? signOffSaid.judged(check.name, judged.words)
+            : signOffSaid.failed(check.name, record.reason),
+        remedy: judged.remedy ?? checkFiguresSaid.putRight,
       });
-    else remarks.push(...judged.words.map((w) => `${check.name}: ${w}`));
+    else remarks.push(...judged.words.map((w) => signOffSaid.judged(check.name, [w])));
   }
   return {
     maySign: blocks.length === 0,
