@@ -44,6 +44,18 @@ export const sinceLastLook = {
 };
 
 export const fleetColumnsWords = {
+  site: 'site',
+  place: 'place',
+  stage: 'stage',
+  strings: 'strings',
+  units: 'units',
+  passing: 'passing',
+  unheard: 'unheard',
+  silent: 'silent',
+  dark: 'dark',
+  stuck: 'stuck',
+  unconfirmed: 'unconfirmed',
+  open: 'open',
   timeZone: 'time zone',
   inShutdown: 'in shutdown',
   notShuttingDown: 'not shutting down',

@@ -57,6 +57,13 @@ export const unitsTable = {
 };
 
 export const shutdownColumns = {
+  verdict: 'verdict',
+  site: 'site',
+  string: 'string',
+  position: 'position',
+  serial: 'serial',
+  cause: 'cause',
+  evidence: 'evidence',
   sinceUtc: 'since (UTC)',
   sharedPart: 'shared part',
   couldAlsoBe: 'could also be',

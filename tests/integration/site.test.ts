@@ -2,6 +2,7 @@ import { afterAll, beforeAll, beforeEach, describe, expect, it } from 'vitest';
 import type { Actor } from '../../src/domain/access/permissions';
 import { GET as siteRoute } from '../../src/pages/api/sites/[site]/index';
 import { GET as eventsRoute } from '../../src/pages/api/sites/[site]/events';
+import { GET as eventsCsvRoute } from '../../src/pages/api/sites/[site]/events.csv';
 import { eventsPage, sitePage } from '../../src/schemas/api/site';
 import { database } from '../../src/server/db/pools';
 import { asActor } from '../../src/server/db/transaction';
@@ -169,5 +170,40 @@ describe("a site's events", () => {
     expect(await wrong('?limit=0')).toBe(422);
     expect(await wrong('?before=yesterday')).toBe(422);
     expect(await wrong('?befor=1.1')).toBe(422);
+  });
+
+  it('are all in the table to download, which is read no faster than it is taken', async () => {
+    const MANY = 3300;
+    await db.owner.query(
+      `insert into event (at, recorded_at, organisation_id, site_id, kind, detail)
+       select $1::timestamptz - (n / 700) * interval '1 hour', $1, organisation_id, id, 'units_stuck',
+              jsonb_build_object('positions', jsonb_build_array(n))
+       from site, generate_series(1, $2::int) n where name = $3`,
+      [NOW, MANY, KESTREL],
+    );
+    await happened(5, 'units_silent');
+    let pages = 0;
+    const counting = ({ sql }: { sql: string }) => void (sql.includes('from event e join site') && pages++);
+    database('web').on('query', counting);
+    const response = await ask(eventsCsvRoute, {
+      actor: analyst,
+      params: { site: ref(KESTREL) },
+      path: '/api/sites/x/events.csv?kind=units_stuck',
+    });
+    expect(response.headers.get('content-disposition')).toBe('attachment; filename="events.csv"');
+    const reader = response.body?.getReader();
+    const bytes: Uint8Array[] = [];
+    for (let piece = await reader?.read(); piece && !piece.done; piece = await reader?.read()) {
+      bytes.push(piece.value);
+      expect(pages).toBeLessThanOrEqual(bytes.length + 1); // at most one is ready before it is asked for
+    }
+    database('web').removeListener('query', counting);
+    expect(pages).toBe(4);
+    const lines = Buffer.concat(bytes).toString('utf8').trim().split('\r\n');
+    expect(lines[0]).toContain('at (UTC),reported (UTC),site,string,kind,what happened');
+    expect(lines).toHaveLength(1 + MANY);
+    expect(new Set(lines).size).toBe(1 + MANY);
+    const elsewhere = await ask(eventsCsvRoute, { actor: analyst, params: { site: ref(NETLOFT) } });
+    expect(elsewhere.status).toBe(404);
   });
 });

@@ -1,24 +1,25 @@
 import { auditView } from '../../schemas/api/audit';
 import { endpoint } from '../../server/http/endpoint';
 import { auditEntries } from '../../server/queries/audit';
-import { csvResponse } from '../../server/reports/csv';
+import { csvPages, pageBy, ROWS_A_PAGE } from '../../server/reports/csv-pages';
+import { auditHeads } from '../../words/csv-heads';
 
-const MOST_ROWS = 20_000;
-
-export const GET = endpoint({ permission: 'audit.read', query: auditView }, async ({ tx, query }) =>
-  csvResponse(
+export const GET = endpoint({ permission: 'audit.read', query: auditView }, (call) =>
+  csvPages(
+    call,
     'who-did-what',
+    async (tx, before: number | undefined = call.query.before) =>
+      pageBy(await auditEntries(tx, { ...call.query, before }, ROWS_A_PAGE + 1), (last) => last.id),
     [
-      { header: 'at (UTC)', value: (e) => new Date(e.at) },
-      { header: 'person', value: (e) => e.person },
-      { header: 'from', value: (e) => e.address },
-      { header: 'action', value: (e) => e.action },
-      { header: 'subject', value: (e) => e.subject },
-      { header: 'site', value: (e) => e.site?.name },
-      { header: 'reason', value: (e) => e.reason },
-      { header: 'before', value: (e) => (e.before === null ? null : JSON.stringify(e.before)) },
-      { header: 'after', value: (e) => (e.after === null ? null : JSON.stringify(e.after)) },
+      { header: auditHeads.atUtc, value: (e) => new Date(e.at) },
+      { header: auditHeads.person, value: (e) => e.person },
+      { header: auditHeads.from, value: (e) => e.address },
+      { header: auditHeads.action, value: (e) => e.action },
+      { header: auditHeads.subject, value: (e) => e.subject },
+      { header: auditHeads.site, value: (e) => e.site?.name },
+      { header: auditHeads.reason, value: (e) => e.reason },
+      { header: auditHeads.before, value: (e) => (e.before === null ? null : JSON.stringify(e.before)) },
+      { header: auditHeads.after, value: (e) => (e.after === null ? null : JSON.stringify(e.after)) },
     ],
-    await auditEntries(tx, query, MOST_ROWS),
   ),
 );

@@ -3,6 +3,7 @@ import { causesView } from '../../schemas/api/causes';
 import { endpoint } from '../../server/http/endpoint';
 import { currencyOf, listCauses } from '../../server/queries/causes-list';
 import { csvResponse } from '../../server/reports/csv';
+import { causeHeads } from '../../words/csv-heads';
 
 const MOST_ROWS = 20_000;
 
@@ -11,21 +12,21 @@ export const GET = endpoint({ permission: 'cause.read', query: causesView }, asy
   return csvResponse(
     'causes',
     [
-      { header: 'site', value: (c) => c.siteName },
-      { header: 'kind', value: (c) => kindWords(c.kind) },
-      { header: 'what', value: (c) => c.headline },
-      { header: 'strings', value: (c) => [...new Set(c.units.map((u) => u.stringName))].join(' ') },
-      { header: 'units', value: (c) => c.units.filter((u) => u.position !== null).length },
-      { header: 'since (UTC)', value: (c) => new Date(c.since) },
-      { header: 'found (UTC)', value: (c) => new Date(c.openedAt) },
-      { header: 'over (UTC)', value: (c) => (c.closedAt === null ? null : new Date(c.closedAt)) },
-      { header: 'came back', value: (c) => c.reopened },
-      { header: 'confidence', value: (c) => Math.round(c.confidence * 100) / 100 },
-      { header: 'loss a day (kWh)', value: (c) => (c.lossWhDay === null ? null : c.lossWhDay / 1000) },
-      { header: 'loss so far (kWh)', value: (c) => c.lossWh / 1000 },
-      { header: `loss so far (${currency ?? 'no currency'})`, value: (c) => c.lossMoney },
-      { header: 'acknowledged by', value: (c) => c.acknowledged?.person },
-      { header: 'case', value: (c) => c.openCase?.number },
+      { header: causeHeads.site, value: (c) => c.siteName },
+      { header: causeHeads.kind, value: (c) => kindWords(c.kind) },
+      { header: causeHeads.what, value: (c) => c.headline },
+      { header: causeHeads.strings, value: (c) => [...new Set(c.units.map((u) => u.stringName))].join(' ') },
+      { header: causeHeads.units, value: (c) => c.units.filter((u) => u.position !== null).length },
+      { header: causeHeads.sinceUtc, value: (c) => new Date(c.since) },
+      { header: causeHeads.foundUtc, value: (c) => new Date(c.openedAt) },
+      { header: causeHeads.overUtc, value: (c) => (c.closedAt === null ? null : new Date(c.closedAt)) },
+      { header: causeHeads.cameBack, value: (c) => c.reopened },
+      { header: causeHeads.confidence, value: (c) => Math.round(c.confidence * 100) / 100 },
+      { header: causeHeads.lossADayKWh, value: (c) => (c.lossWhDay === null ? null : c.lossWhDay / 1000) },
+      { header: causeHeads.lossUntilNowKWh, value: (c) => c.lossWh / 1000 },
+      { header: causeHeads.lossUntilNowMoney(currency), value: (c) => c.lossMoney },
+      { header: causeHeads.acknowledgedBy, value: (c) => c.acknowledged?.person },
+      { header: causeHeads.case, value: (c) => c.openCase?.number },
     ],
     await listCauses(tx, query, currency, MOST_ROWS),
   );

@@ -3,6 +3,7 @@ import { peopleView } from '../../schemas/api/people';
 import { endpoint } from '../../server/http/endpoint';
 import { csvResponse } from '../../server/reports/csv';
 import { peoplePage } from '../../server/services/people';
+import { peopleHeads } from '../../words/csv-heads';
 
 export const GET = endpoint(
   { permission: 'people.manage', query: peopleView },
@@ -12,15 +13,16 @@ export const GET = endpoint(
     return csvResponse(
       'people',
       [
-        { header: 'name', value: (p) => p.name },
-        { header: 'e-mail', value: (p) => p.email },
-        { header: 'role', value: (p) => p.role },
-        { header: 'may sign in', value: (p) => p.active },
-        { header: 'second factor', value: (p) => p.secondFactor },
-        { header: 'last seen (UTC)', value: (p) => p.lastSeenAt && new Date(p.lastSeenAt) },
+        { header: peopleHeads.name, value: (p) => p.name },
+        { header: peopleHeads.eMail, value: (p) => p.email },
+        { header: peopleHeads.role, value: (p) => p.role },
+        { header: peopleHeads.maySignIn, value: (p) => p.active },
+        { header: peopleHeads.secondFactor, value: (p) => p.secondFactor },
+        { header: peopleHeads.lastSeenUtc, value: (p) => p.lastSeenAt && new Date(p.lastSeenAt) },
         {
-          header: 'sites',
-          value: (p) => (p.role === 'customer' ? p.sites.map((s) => names.get(s) ?? '').join('; ') : 'all'),
+          header: peopleHeads.sites,
+          value: (p) =>
+            p.role === 'customer' ? p.sites.map((s) => names.get(s) ?? '').join('; ') : peopleHeads.allSites,
         },
       ],
       listedPeople(page.people, query),

@@ -6,6 +6,7 @@ import { judgedNow } from '../../domain/commissioning/readings/judged-now';
 import { STAGE_WORDS } from '../../words/domain-reading-stages';
 import type { CaptureSnapshot, CaptureString } from '../../schemas/api/capture';
 import { csvResponse } from './csv';
+import { checkHeads, readingHeads } from '../../words/csv-heads-site';
 
 /** Install checks and meter readings of a site as downloads. Times in UTC. */
 
@@ -46,21 +47,27 @@ export function checksCsv(sheet: CaptureSnapshot): Response {
   return csvResponse(
     `${sheet.site.name} install checks`,
     [
-      { header: 'string', value: (r) => r.string.name },
-      { header: 'check', value: (r) => r.check.name },
-      { header: 'result', value: (r) => r.record?.result.replace('_', ' ') ?? 'not recorded' },
-      { header: 'reason', value: (r) => r.record?.reason },
-      { header: 'figures', value: (r) => r.record && figureWords(sheet, r.check, r.record) },
-      { header: 'what the figures say', value: (r) => r.judged?.words.join(' ') },
-      { header: 'source', value: (r) => (r.judged?.words.length ? r.judged.source : r.check.source) },
-      { header: 'note', value: (r) => r.record?.note },
-      { header: 'person', value: (r) => r.record?.person },
-      { header: 'time (UTC)', value: (r) => r.record && new Date(r.record.at) },
-      { header: 'recorded (UTC)', value: (r) => r.record && new Date(r.record.recordedAt) },
-      { header: 'string signed by', value: (r) => r.string.signOff?.person },
-      { header: 'string signed (UTC)', value: (r) => r.string.signOff && new Date(r.string.signOff.at) },
-      { header: 'signature holds', value: (r) => r.string.signOff && !r.string.signOff.stale },
-      { header: 'string may be signed', value: (r) => r.state.maySign },
+      { header: checkHeads.string, value: (r) => r.string.name },
+      { header: checkHeads.check, value: (r) => r.check.name },
+      {
+        header: checkHeads.result,
+        value: (r) => r.record?.result.replace('_', ' ') ?? checkHeads.notRecorded,
+      },
+      { header: checkHeads.reason, value: (r) => r.record?.reason },
+      { header: checkHeads.figures, value: (r) => r.record && figureWords(sheet, r.check, r.record) },
+      { header: checkHeads.whatTheFiguresSay, value: (r) => r.judged?.words.join(' ') },
+      {
+        header: checkHeads.source,
+        value: (r) => (r.judged?.words.length ? r.judged.source : r.check.source),
+      },
+      { header: checkHeads.note, value: (r) => r.record?.note },
+      { header: checkHeads.person, value: (r) => r.record?.person },
+      { header: checkHeads.timeUtc, value: (r) => r.record && new Date(r.record.at) },
+      { header: checkHeads.recordedUtc, value: (r) => r.record && new Date(r.record.recordedAt) },
+      { header: checkHeads.stringSignedBy, value: (r) => r.string.signOff?.person },
+      { header: checkHeads.stringSignedUtc, value: (r) => r.string.signOff && new Date(r.string.signOff.at) },
+      { header: checkHeads.signatureHolds, value: (r) => r.string.signOff && !r.string.signOff.stale },
+      { header: checkHeads.stringMayBeSigned, value: (r) => r.state.maySign },
     ],
     rows,
   );
@@ -89,26 +96,29 @@ export function readingsCsv(sheet: CaptureSnapshot): Response {
   return csvResponse(
     `${sheet.site.name} meter readings`,
     [
-      { header: 'string', value: (r) => r.string.name },
-      { header: 'units', value: (r) => r.string.units },
-      { header: 'stage', value: (r) => (r.reading ? STAGE_WORDS[r.reading.stage] : 'not read') },
-      { header: 'between', value: (r) => r.reading?.kind.replaceAll('_', ' ') },
-      { header: 'voltage (V)', value: (r) => rounded(r.reading?.voltage) },
-      { header: 'expected from (V)', value: (r) => rounded(r.finding?.expectedLowV) },
-      { header: 'expected to (V)', value: (r) => rounded(r.finding?.expectedHighV) },
+      { header: readingHeads.string, value: (r) => r.string.name },
+      { header: readingHeads.units, value: (r) => r.string.units },
       {
-        header: 'outcome',
+        header: readingHeads.stage,
+        value: (r) => (r.reading ? STAGE_WORDS[r.reading.stage] : readingHeads.notRead),
+      },
+      { header: readingHeads.between, value: (r) => r.reading?.kind.replaceAll('_', ' ') },
+      { header: readingHeads.voltageV, value: (r) => rounded(r.reading?.voltage) },
+      { header: readingHeads.expectedFromV, value: (r) => rounded(r.finding?.expectedLowV) },
+      { header: readingHeads.expectedToV, value: (r) => rounded(r.finding?.expectedHighV) },
+      {
+        header: readingHeads.outcome,
         value: (r) => r.finding?.outcome.replace('_', ' ').replace('cant tell', 'can’t tell'),
       },
-      { header: 'what it means', value: (r) => r.finding?.headline },
-      { header: 'light', value: (r) => r.reading?.light },
-      { header: 'commanded', value: (r) => r.reading?.commanded },
-      { header: 'units heard', value: (r) => r.finding?.heard },
-      { header: 'strings compared with', value: (r) => r.finding?.siblings.join(', ') },
-      { header: 'note', value: (r) => r.reading?.note },
-      { header: 'person', value: (r) => r.reading?.person },
-      { header: 'time (UTC)', value: (r) => r.reading && new Date(r.reading.at) },
-      { header: 'recorded (UTC)', value: (r) => r.reading && new Date(r.reading.recordedAt) },
+      { header: readingHeads.whatItMeans, value: (r) => r.finding?.headline },
+      { header: readingHeads.light, value: (r) => r.reading?.light },
+      { header: readingHeads.commanded, value: (r) => r.reading?.commanded },
+      { header: readingHeads.unitsHeard, value: (r) => r.finding?.heard },
+      { header: readingHeads.stringsComparedWith, value: (r) => r.finding?.siblings.join(', ') },
+      { header: readingHeads.note, value: (r) => r.reading?.note },
+      { header: readingHeads.person, value: (r) => r.reading?.person },
+      { header: readingHeads.timeUtc, value: (r) => r.reading && new Date(r.reading.at) },
+      { header: readingHeads.recordedUtc, value: (r) => r.reading && new Date(r.reading.recordedAt) },
     ],
     rows,
   );

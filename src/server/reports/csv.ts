@@ -1,4 +1,5 @@
 import { harmlessCell } from '../../schemas/csv-cell';
+import { csvCells } from '../../words/csv-heads';
 
 /**
  * The one CSV writer. RFC 4180: CRLF ends every record, a field with a quote, comma or line break is quoted
@@ -26,10 +27,17 @@ export function csvField(cell: Cell): string {
   return NEEDS_QUOTES.test(harmless) ? `"${harmless.replaceAll('"', '""')}"` : harmless;
 }
 
+/** The same for people: yes and no in their language. */
+const readField = (cell: Cell): string =>
+  csvField(typeof cell === 'boolean' ? (cell ? csvCells.yes : csvCells.no) : cell);
+
+/** A cell of a time as answers write it; empty where there is none. */
+export const timeCell = (at: string | null | undefined): Date | null => (at ? new Date(at) : null);
+
 /** The records one by one, the header first, each with its CRLF. */
 export function* csvRecords<Row>(columns: readonly Column<Row>[], rows: Iterable<Row>): Generator<string> {
   yield `${columns.map((c) => csvField(c.header)).join(',')}\r\n`;
-  for (const row of rows) yield `${columns.map((c) => csvField(c.value(row))).join(',')}\r\n`;
+  for (const row of rows) yield `${columns.map((c) => readField(c.value(row))).join(',')}\r\n`;
 }
 
 export const BYTE_ORDER_MARK = '\uFEFF';

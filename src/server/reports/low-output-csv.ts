@@ -1,5 +1,6 @@
 import { lowRows, type LowOutput, type LowOutputView } from '../../schemas/api/low-output-rows';
 import { csvResponse } from './csv';
+import { lowOutputHeads } from '../../words/csv-heads';
 
 const round = (value: number | null, digits: number): number | null =>
   value === null ? null : Number(value.toFixed(digits));
@@ -9,23 +10,23 @@ export const lowOutputCsv = (low: LowOutput, view: LowOutputView): Response =>
   csvResponse(
     `low strings ${low.at.slice(0, 10)}`,
     [
-      { header: 'site', value: (r) => r.site.name },
-      { header: 'string', value: (r) => r.string.name },
-      { header: 'plane', value: (r) => r.plane },
-      { header: 'since (local day)', value: (r) => r.since },
-      { header: 'judged (local day)', value: (r) => r.day },
-      { header: 'missing share', value: (r) => round(r.share, 4) },
-      { header: 'loss a day (kWh)', value: (r) => round(r.lossKWhDay, 3) },
-      { header: 'loss a day, at least (kWh)', value: (r) => round(r.lossKWhDayLow, 3) },
-      { header: 'loss a day, at most (kWh)', value: (r) => round(r.lossKWhDayHigh, 3) },
-      { header: `loss a day (${low.currency ?? 'no currency set'})`, value: (r) => round(r.moneyDay, 2) },
-      { header: 'lost since found (kWh)', value: (r) => round(r.lossKWh, 3) },
-      { header: 'signature', value: (r) => r.signature },
-      { header: 'what it looks like', value: (r) => r.words },
-      { header: 'held against', value: (r) => r.method },
-      { header: 'figures of', value: (r) => r.scope },
-      { header: 'confidence', value: (r) => round(r.confidence, 2) },
-      { header: 'open case', value: (r) => r.openCase?.number ?? null },
+      { header: lowOutputHeads.site, value: (r) => r.site.name },
+      { header: lowOutputHeads.string, value: (r) => r.string.name },
+      { header: lowOutputHeads.plane, value: (r) => r.plane },
+      { header: lowOutputHeads.sinceLocalDay, value: (r) => r.since },
+      { header: lowOutputHeads.judgedLocalDay, value: (r) => r.day },
+      { header: lowOutputHeads.missingShare, value: (r) => round(r.share, 4) },
+      { header: lowOutputHeads.lossADayKWh, value: (r) => round(r.lossKWhDay, 3) },
+      { header: lowOutputHeads.lossADayAtLeastKWh, value: (r) => round(r.lossKWhDayLow, 3) },
+      { header: lowOutputHeads.lossADayAtMostKWh, value: (r) => round(r.lossKWhDayHigh, 3) },
+      { header: lowOutputHeads.lossADayMoney(low.currency), value: (r) => round(r.moneyDay, 2) },
+      { header: lowOutputHeads.lostSinceFoundKWh, value: (r) => round(r.lossKWh, 3) },
+      { header: lowOutputHeads.signature, value: (r) => r.signature },
+      { header: lowOutputHeads.whatItLooksLike, value: (r) => r.words },
+      { header: lowOutputHeads.heldAgainst, value: (r) => r.method },
+      { header: lowOutputHeads.figuresOf, value: (r) => r.scope },
+      { header: lowOutputHeads.confidence, value: (r) => round(r.confidence, 2) },
+      { header: lowOutputHeads.openCase, value: (r) => r.openCase?.number ?? null },
     ],
     lowRows(low.rows, view),
   );

@@ -6,6 +6,7 @@ import { readHeat, readUnits } from '../services/string-units';
 import { readLoop } from '../services/string-loop';
 import { stringFacts } from '../queries/string-facts';
 import { csvResponse, type Cell, type Column } from './csv';
+import { stringHeads } from '../../words/csv-heads-site';
 
 const rounded = (value: number | null | undefined, digits: number): number | null =>
   value === null || value === undefined ? null : Number(value.toFixed(digits));
@@ -43,13 +44,13 @@ export async function historyCsv(tx: Tx, ref: string, query: HistoryQuery, now: 
   return csvResponse(
     `${name} ${history.quantity} ${history.range} to ${dayOf(history.to)}`,
     [
-      { header: 'time (UTC)', value: (r) => instant(r.at) },
-      column(`${history.quantity}, mean (${history.unit})`, history.values, 3),
-      column(`${history.quantity}, lowest (${history.unit})`, history.low, 3),
-      column(`${history.quantity}, highest (${history.unit})`, history.high, 3),
-      column('energy in the step (Wh)', history.energy, 2),
-      { header: `expected from (${history.unit})`, value: (r) => rounded(history.expected.low[r.e], 3) },
-      { header: `expected to (${history.unit})`, value: (r) => rounded(history.expected.high[r.e], 3) },
+      { header: stringHeads.timeUtc, value: (r) => instant(r.at) },
+      column(stringHeads.mean(history.quantity, history.unit), history.values, 3),
+      column(stringHeads.lowest(history.quantity, history.unit), history.low, 3),
+      column(stringHeads.highest(history.quantity, history.unit), history.high, 3),
+      column(stringHeads.energyInTheStepWh, history.energy, 2),
+      { header: stringHeads.expectedFrom(history.unit), value: (r) => rounded(history.expected.low[r.e], 3) },
+      { header: stringHeads.expectedTo(history.unit), value: (r) => rounded(history.expected.high[r.e], 3) },
     ],
     rows,
   );
@@ -71,9 +72,9 @@ export async function heatCsv(
   return csvResponse(
     `${name} units ${heat.quantity} ${heat.day} all`,
     [
-      { header: 'time (UTC)', value: (r) => instant(r.at) },
+      { header: stringHeads.timeUtc, value: (r) => instant(r.at) },
       ...heat.rows.map((row): Column<(typeof rows)[0]> => ({
-        header: `position ${row.position} (${heat.unit})`,
+        header: stringHeads.position(row.position, heat.unit),
         value: (r) => rounded(row.values[r.i], 3),
       })),
     ],
@@ -96,9 +97,9 @@ export async function loopCsv(
   return csvResponse(
     `${name} loop ${loop.fromDay} to ${loop.day}`,
     [
-      { header: 'time (UTC)', value: (p) => instant(p.at) },
-      { header: 'string current (A)', value: (p) => rounded(p.ownA, 3) },
-      { header: 'sum of the units less the input (V)', value: (p) => rounded(p.gapV, 3) },
+      { header: stringHeads.timeUtc, value: (p) => instant(p.at) },
+      { header: stringHeads.stringCurrentA, value: (p) => rounded(p.ownA, 3) },
+      { header: stringHeads.sumLessTheInputV, value: (p) => rounded(p.gapV, 3) },
     ],
     loop.points,
   );
@@ -115,9 +116,9 @@ export async function unitsCsv(tx: Tx, ref: string, query: UnitsQuery, now: Date
   return csvResponse(
     `${name} units ${units.quantity} ${dayOf(units.to)}`,
     [
-      { header: 'time (UTC)', value: (r) => instant(r.at) },
+      { header: stringHeads.timeUtc, value: (r) => instant(r.at) },
       ...units.lines.map((line): Column<(typeof rows)[0]> => ({
-        header: `position ${line.position} (${units.unit})`,
+        header: stringHeads.position(line.position, units.unit),
         value: (r) => rounded(line.values[r.i], 3),
       })),
     ],

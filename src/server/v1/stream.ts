@@ -10,7 +10,7 @@ const AT_ONCE = 4;
 const OF_ONE = 2;
 /** A reader who takes nothing for so long is gone. */
 const STALL_MS = 60_000;
-/** So often it is looked at whether the token still holds. */
+/** So often it is looked at whether who reads still may. */
 const LOOK_MS = 5_000;
 
 const running = new Map<number, number>();
@@ -76,7 +76,7 @@ async function inTime(work: Promise<void>): Promise<void> {
   }
 }
 
-/** The body of a stream. It ends early, as an error of the connection, where its token ends or its reader stalls. */
+/** The body of a stream. It ends early, as an error of the connection, where its reader stalls or may no longer. */
 export function bodyOf(stream: RecordStream, reader: Reader): ReadableStream<Uint8Array> {
   const encoder = new TextEncoder();
   let head = headOf(stream);
@@ -96,7 +96,7 @@ export function bodyOf(stream: RecordStream, reader: Reader): ReadableStream<Uin
     for (;;) {
       await inTime(reader.drained());
       if (Date.now() - lookedMs > LOOK_MS) {
-        if (!(await reader.holds())) throw new StreamEnded('its token has ended');
+        if (!(await reader.holds())) throw new StreamEnded('who reads it may no longer');
         lookedMs = Date.now();
       }
       const { done, value } = await stream.pieces.next();
@@ -120,7 +120,7 @@ export function bodyOf(stream: RecordStream, reader: Reader): ReadableStream<Uin
           await finish();
           log.warn(
             { error: error instanceof Error ? error.message : error },
-            'a stream of readings broke off',
+            'a stream broke off',
           );
           controller.error(error);
         }

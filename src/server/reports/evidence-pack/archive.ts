@@ -4,6 +4,13 @@ import { eventWords } from '../../../domain/verdicts/event-words';
 import { csvText, fileName } from '../csv';
 import type { StringHistory } from '../../../schemas/api/string';
 import type { Evidence, EvidenceAbout } from './data';
+import {
+  evidenceReadingHeads,
+  evidenceAsBuiltHeads,
+  evidenceEventHeads,
+  evidenceMeterHeads,
+  evidenceContents,
+} from '../../../words/csv-heads-evidence';
 
 const TEXT = { level: 6 } as const;
 /** Pictures are packed already. */
@@ -31,9 +38,9 @@ function rowsOf(histories: readonly StringHistory[]): Step[] {
 export function readingsCsv(histories: readonly StringHistory[]): string {
   return csvText(
     [
-      { header: 'time (UTC)', value: (r: Step) => new Date(r.at * 1000) },
+      { header: evidenceReadingHeads.timeUtc, value: (r: Step) => new Date(r.at * 1000) },
       ...histories.map((h, i) => ({
-        header: `${h.quantity} (${h.unit})`,
+        header: evidenceReadingHeads.quantity(h.quantity, h.unit),
         value: (r: Step) => {
           const value = r.values[i] ?? null;
           return value === null ? null : Number(value.toFixed(3));
@@ -48,17 +55,17 @@ function asBuiltCsvOf(data: Evidence): string {
   const rows = data.strings.flatMap((s) => s.built.slots.map((slot) => ({ string: s.built, slot })));
   return csvText(
     [
-      { header: 'string', value: (r) => r.string.name },
-      { header: 'position', value: (r) => r.slot.position },
-      { header: 'serial', value: (r) => r.slot.serial },
-      { header: 'unit type', value: (r) => r.string.unitType },
-      { header: 'module type', value: (r) => r.slot.moduleType },
-      { header: 'plane', value: (r) => r.string.plane },
-      { header: 'inverter', value: (r) => r.string.inverter },
-      { header: 'input', value: (r) => r.string.input },
-      { header: 'zone', value: (r) => r.string.zone },
-      { header: 'transmitters', value: (r) => r.string.transmitters.join('; ') },
-      { header: 'place', value: (r) => r.slot.place },
+      { header: evidenceAsBuiltHeads.string, value: (r) => r.string.name },
+      { header: evidenceAsBuiltHeads.position, value: (r) => r.slot.position },
+      { header: evidenceAsBuiltHeads.serial, value: (r) => r.slot.serial },
+      { header: evidenceAsBuiltHeads.unitType, value: (r) => r.string.unitType },
+      { header: evidenceAsBuiltHeads.moduleType, value: (r) => r.slot.moduleType },
+      { header: evidenceAsBuiltHeads.plane, value: (r) => r.string.plane },
+      { header: evidenceAsBuiltHeads.inverter, value: (r) => r.string.inverter },
+      { header: evidenceAsBuiltHeads.input, value: (r) => r.string.input },
+      { header: evidenceAsBuiltHeads.zone, value: (r) => r.string.zone },
+      { header: evidenceAsBuiltHeads.transmitters, value: (r) => r.string.transmitters.join('; ') },
+      { header: evidenceAsBuiltHeads.place, value: (r) => r.slot.place },
     ],
     rows,
   );
@@ -67,10 +74,10 @@ function asBuiltCsvOf(data: Evidence): string {
 const eventsCsvOf = (data: Evidence): string =>
   csvText(
     [
-      { header: 'time (UTC)', value: (e) => new Date(e.at) },
-      { header: 'string', value: (e) => e.stringName },
-      { header: 'kind', value: (e) => e.kind },
-      { header: 'what', value: (e) => eventWords(e.kind, e.detail).words },
+      { header: evidenceEventHeads.timeUtc, value: (e) => new Date(e.at) },
+      { header: evidenceEventHeads.string, value: (e) => e.stringName },
+      { header: evidenceEventHeads.kind, value: (e) => e.kind },
+      { header: evidenceEventHeads.what, value: (e) => eventWords(e.kind, e.detail).words },
     ],
     data.events,
   );
@@ -78,13 +85,13 @@ const eventsCsvOf = (data: Evidence): string =>
 const meterCsvOf = (data: Evidence): string =>
   csvText(
     [
-      { header: 'time (UTC)', value: (r) => new Date(r.at) },
-      { header: 'string', value: (r) => r.string },
-      { header: 'stage', value: (r) => r.stage },
-      { header: 'between', value: (r) => r.kind },
-      { header: 'voltage (V)', value: (r) => r.voltage },
-      { header: 'what it means', value: (r) => r.finding?.headline },
-      { header: 'by', value: (r) => r.person },
+      { header: evidenceMeterHeads.timeUtc, value: (r) => new Date(r.at) },
+      { header: evidenceMeterHeads.string, value: (r) => r.string },
+      { header: evidenceMeterHeads.stage, value: (r) => r.stage },
+      { header: evidenceMeterHeads.between, value: (r) => r.kind },
+      { header: evidenceMeterHeads.voltageV, value: (r) => r.voltage },
+      { header: evidenceMeterHeads.whatItMeans, value: (r) => r.finding?.headline },
+      { header: evidenceMeterHeads.by, value: (r) => r.person },
     ],
     data.meterReadings,
   );
@@ -120,9 +127,9 @@ export function evidenceZip(
     if (bytes) files.push([`photos/${String(i + 1).padStart(2, '0')}-${stem}.jpg`, bytes, false]);
   });
   const contents = [
-    `Evidence of case ${data.case.number}: ${data.case.title}`,
-    `${data.case.siteName}. Put together ${about.at.toISOString()} by ${about.madeBy}.`,
-    `Fingerprint of the data (SHA-256): ${about.fingerprint}`,
+    evidenceContents.title(data.case.number, data.case.title),
+    evidenceContents.madeBy(data.case.siteName, about.at.toISOString(), about.madeBy),
+    evidenceContents.fingerprint(about.fingerprint),
     '',
     ...files.map(([name, bytes]) => `${createHash('sha256').update(bytes).digest('hex')}  ${name}`),
     '',

@@ -1,24 +1,30 @@
 import { eventWords } from '../../../../domain/verdicts/event-words';
 import { eventsView, siteParams } from '../../../../schemas/api/site';
 import { endpoint } from '../../../../server/http/endpoint';
-import { csvResponse } from '../../../../server/reports/csv';
+import { csvPages, ROWS_A_PAGE } from '../../../../server/reports/csv-pages';
 import { readEvents } from '../../../../server/services/site-page';
+import { eventHeads } from '../../../../words/csv-heads-site';
 
-const MOST_ROWS = 20_000;
-
-export const GET = endpoint(
-  { permission: 'site.read', params: siteParams, query: eventsView },
-  async ({ tx, params, query: { kind } }) =>
-    csvResponse(
-      'events',
-      [
-        { header: 'at (UTC)', value: (e) => new Date(e.at) },
-        { header: 'reported (UTC)', value: (e) => new Date(e.recordedAt) },
-        { header: 'site', value: (e) => e.siteName },
-        { header: 'string', value: (e) => e.stringName },
-        { header: 'kind', value: (e) => e.kind },
-        { header: 'what happened', value: (e) => eventWords(e.kind, e.detail).words },
-      ],
-      (await readEvents(tx, params.site, { limit: MOST_ROWS, ...(kind !== 'all' && { kind }) })).events,
-    ),
-);
+export const GET = endpoint({ permission: 'site.read', params: siteParams, query: eventsView }, (call) => {
+  const { kind } = call.query;
+  return csvPages(
+    call,
+    'events',
+    async (tx, before: string | undefined) => {
+      const page = await readEvents(tx, call.params.site, {
+        limit: ROWS_A_PAGE,
+        ...(before !== undefined && { before }),
+        ...(kind !== 'all' && { kind }),
+      });
+      return { rows: page.events, next: page.before };
+    },
+    [
+      { header: eventHeads.atUtc, value: (e) => new Date(e.at) },
+      { header: eventHeads.reportedUtc, value: (e) => new Date(e.recordedAt) },
+      { header: eventHeads.site, value: (e) => e.siteName },
+      { header: eventHeads.string, value: (e) => e.stringName },
+      { header: eventHeads.kind, value: (e) => e.kind },
+      { header: eventHeads.whatHappened, value: (e) => eventWords(e.kind, e.detail).words },
+    ],
+  );
+});

@@ -3,6 +3,7 @@ import { id } from '../../../../schemas/api/now';
 import { endpoint } from '../../../../server/http/endpoint';
 import { csvResponse } from '../../../../server/reports/csv';
 import { plannedWorksPage } from '../../../../server/services/planned-works';
+import { plannedWorkHeads } from '../../../../words/csv-heads-site';
 
 export const GET = endpoint(
   { permission: 'site.read', params: z.object({ site: id }) },
@@ -11,12 +12,15 @@ export const GET = endpoint(
     return csvResponse(
       `planned-works-${page.site.name}`,
       [
-        { header: 'from (UTC)', value: (w) => new Date(w.startsAt) },
-        { header: 'to (UTC)', value: (w) => new Date(w.endsAt) },
-        { header: 'what', value: (w) => w.reason },
-        { header: 'strings', value: (w) => w.strings?.join(' ') ?? 'whole site' },
-        { header: 'entered by', value: (w) => w.by },
-        { header: 'ended early by', value: (w) => w.endedBy },
+        { header: plannedWorkHeads.fromUtc, value: (w) => new Date(w.startsAt) },
+        { header: plannedWorkHeads.toUtc, value: (w) => new Date(w.endsAt) },
+        { header: plannedWorkHeads.what, value: (w) => w.reason },
+        {
+          header: plannedWorkHeads.strings,
+          value: (w) => w.strings?.join(' ') ?? plannedWorkHeads.wholeSite,
+        },
+        { header: plannedWorkHeads.enteredBy, value: (w) => w.by },
+        { header: plannedWorkHeads.endedEarlyBy, value: (w) => w.endedBy },
       ],
       page.works,
     );

@@ -5,6 +5,7 @@ import { siteParams } from '../../../../schemas/api/site';
 import { endpoint } from '../../../../server/http/endpoint';
 import { csvResponse } from '../../../../server/reports/csv';
 import { shutdownTestList } from '../../../../server/services/shutdown-test-report';
+import { shutdownTestHeads } from '../../../../words/csv-heads-site';
 
 export const GET = endpoint(
   { permission: 'shutdown_test.read', params: siteParams, query: testListView },
@@ -13,16 +14,16 @@ export const GET = endpoint(
     return csvResponse(
       `shutdown-tests-${list.site.name}`,
       [
-        { header: 'zone', value: (t) => t.zone },
-        { header: 'state', value: (t) => (t.superseded ? 'superseded' : t.state) },
-        { header: 'time (UTC)', value: (t) => t.at },
-        { header: 'result', value: (t) => t.result && RESULT_WORDS[t.result] },
-        { header: 'strings', value: (t) => t.strings },
-        { header: 'strings failed', value: (t) => t.failed },
-        { header: 'strings carried from an earlier test', value: (t) => t.carried },
-        { header: 'signed or started by', value: (t) => t.by },
-        { header: 'reason of the end', value: (t) => t.reason },
-        { header: 'fingerprint (SHA-256)', value: (t) => t.fingerprint },
+        { header: shutdownTestHeads.zone, value: (t) => t.zone },
+        { header: shutdownTestHeads.state, value: (t) => (t.superseded ? 'superseded' : t.state) },
+        { header: shutdownTestHeads.timeUtc, value: (t) => t.at },
+        { header: shutdownTestHeads.result, value: (t) => t.result && RESULT_WORDS[t.result] },
+        { header: shutdownTestHeads.strings, value: (t) => t.strings },
+        { header: shutdownTestHeads.stringsFailed, value: (t) => t.failed },
+        { header: shutdownTestHeads.stringsCarried, value: (t) => t.carried },
+        { header: shutdownTestHeads.signedOrStartedBy, value: (t) => t.by },
+        { header: shutdownTestHeads.reasonOfTheEnd, value: (t) => t.reason },
+        { header: shutdownTestHeads.fingerprintSHA256, value: (t) => t.fingerprint },
       ],
       listedTests(list.tests, query),
     );

@@ -2,28 +2,32 @@ import { deliveriesView, webhookParams } from '../../../../schemas/api/webhooks'
 import { found } from '../../../../server/errors';
 import { endpoint } from '../../../../server/http/endpoint';
 import { deliveriesOf, webhookByRef } from '../../../../server/queries/webhooks';
-import { csvResponse } from '../../../../server/reports/csv';
-
-const MOST_ROWS = 20_000;
+import { csvPages, pageBy, ROWS_A_PAGE } from '../../../../server/reports/csv-pages';
+import { deliveryHeads } from '../../../../words/csv-heads';
 
 export const GET = endpoint(
   { permission: 'webhook.manage', params: webhookParams, query: deliveriesView },
-  async ({ tx, params, query }) => {
-    const { number } = found(await webhookByRef(tx, params.webhook), 'webhook');
-    return csvResponse(
+  async (call) => {
+    const { number } = found(await webhookByRef(call.tx, call.params.webhook), 'webhook');
+    return csvPages(
+      call,
       'calls',
+      async (tx, before: number | undefined = call.query.before) =>
+        pageBy(
+          await deliveriesOf(tx, number, { ...call.query, before }, ROWS_A_PAGE + 1),
+          (last) => last.number,
+        ),
       [
-        { header: 'noted (UTC)', value: (d) => new Date(d.createdAt) },
-        { header: 'call', value: (d) => d.id },
-        { header: 'kind', value: (d) => d.kind },
-        { header: 'site', value: (d) => d.site },
-        { header: 'state', value: (d) => d.state },
-        { header: 'tries', value: (d) => d.attempts.length },
-        { header: 'last status', value: (d) => d.attempts[0]?.status },
-        { header: 'last latency (ms)', value: (d) => d.attempts[0]?.latencyMs },
-        { header: 'last failure', value: (d) => d.attempts[0]?.error },
+        { header: deliveryHeads.notedUtc, value: (d) => new Date(d.createdAt) },
+        { header: deliveryHeads.call, value: (d) => d.id },
+        { header: deliveryHeads.kind, value: (d) => d.kind },
+        { header: deliveryHeads.site, value: (d) => d.site },
+        { header: deliveryHeads.state, value: (d) => d.state },
+        { header: deliveryHeads.tries, value: (d) => d.attempts.length },
+        { header: deliveryHeads.lastStatus, value: (d) => d.attempts[0]?.status },
+        { header: deliveryHeads.lastLatencyMs, value: (d) => d.attempts[0]?.latencyMs },
+        { header: deliveryHeads.lastFailure, value: (d) => d.attempts[0]?.error },
       ],
-      await deliveriesOf(tx, number, query, MOST_ROWS),
     );
   },
 );

@@ -4,6 +4,7 @@ import { siteParams } from '../../../../../schemas/api/site';
 import { endpoint } from '../../../../../server/http/endpoint';
 import { csvResponse } from '../../../../../server/reports/csv';
 import { historyPage } from '../../../../../server/services/as-built-history';
+import { asBuiltHistoryHeads } from '../../../../../words/csv-heads-site';
 
 /** More entries than a site gathers in decades. */
 const ALL = 100_000;
@@ -15,12 +16,12 @@ export const GET = endpoint(
     return csvResponse(
       `as-built-history-${page.site.name}`,
       [
-        { header: 'at (UTC)', value: (i) => new Date(i.at) },
-        { header: 'person', value: (i) => i.person },
-        { header: 'what', value: (i) => historyTitle(i) },
-        { header: 'change', value: (i) => changeText(i) },
-        { header: 'reason', value: (i) => i.reason },
-        { header: 'how', value: (i) => sourceWords(i.source) },
+        { header: asBuiltHistoryHeads.atUtc, value: (i) => new Date(i.at) },
+        { header: asBuiltHistoryHeads.person, value: (i) => i.person },
+        { header: asBuiltHistoryHeads.what, value: (i) => historyTitle(i) },
+        { header: asBuiltHistoryHeads.change, value: (i) => changeText(i) },
+        { header: asBuiltHistoryHeads.reason, value: (i) => i.reason },
+        { header: asBuiltHistoryHeads.how, value: (i) => sourceWords(i.source) },
       ],
       page.items,
     );

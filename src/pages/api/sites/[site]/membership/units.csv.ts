@@ -3,14 +3,7 @@ import { siteParams } from '../../../../../schemas/api/site';
 import { endpoint } from '../../../../../server/http/endpoint';
 import { csvResponse } from '../../../../../server/reports/csv';
 import { membershipUnits } from '../../../../../server/services/membership';
-
-const OUTCOMES = {
-  here: 'carries the current of its string',
-  elsewhere: 'carries the current of another string',
-  cant_tell: 'can’t tell',
-  fits_none: 'fits no string',
-} as const;
-const MISFIT = 'not its string; several others fit alike';
+import { membershipHeads } from '../../../../../words/csv-heads-site';
 
 export const GET = endpoint(
   { permission: 'telemetry.export', params: siteParams, query: membershipQuery },
@@ -19,18 +12,21 @@ export const GET = endpoint(
     return csvResponse(
       `membership-${site.name}`,
       [
-        { header: 'string', value: (u) => u.string },
-        { header: 'position', value: (u) => u.position },
-        { header: 'serial', value: (u) => u.serial },
+        { header: membershipHeads.string, value: (u) => u.string },
+        { header: membershipHeads.position, value: (u) => u.position },
+        { header: membershipHeads.serial, value: (u) => u.serial },
         {
-          header: 'finding',
-          value: (u) => (u.fitsOwn || u.outcome !== 'cant_tell' ? OUTCOMES[u.outcome] : MISFIT),
+          header: membershipHeads.finding,
+          value: (u) =>
+            u.fitsOwn || u.outcome !== 'cant_tell'
+              ? membershipHeads.findings[u.outcome]
+              : membershipHeads.severalFit,
         },
-        { header: 'other string', value: (u) => u.otherString },
-        { header: 'apart from its string (%)', value: (u) => percent(u.apartOwn) },
-        { header: 'apart from the other (%)', value: (u) => percent(u.apartOther) },
-        { header: 'reports with current', value: (u) => u.steps },
-        { header: 'in words', value: (u) => u.words },
+        { header: membershipHeads.otherString, value: (u) => u.otherString },
+        { header: membershipHeads.apartFromItsString, value: (u) => percent(u.apartOwn) },
+        { header: membershipHeads.apartFromTheOther, value: (u) => percent(u.apartOther) },
+        { header: membershipHeads.reportsWithCurrent, value: (u) => u.steps },
+        { header: membershipHeads.inWords, value: (u) => u.words },
       ],
       units,
     );
