@@ -41,6 +41,15 @@ export const partFields = {
 };
 
 export const partsSheets = {
+  transmitterNeedsZone: 'A transmitter needs a zone first.',
+  zoneNeedsInitiator: 'A zone needs an initiator first.',
+  sensorNeedsLogger: 'A sensor needs a logger first.',
+  place: 'Place',
+  timeZone: 'Time zone',
+  rules: 'Rules',
+  airColdestHottest: 'Air, coldest and hottest',
+  shutdownSwitch: 'Shutdown switch',
+  contact: 'Contact',
   noYet: (many: string) => `No ${many} yet.`,
   edit: 'Edit',
   editOneRow: (one: string, row: string) => `Edit ${one} ${row}`,

@@ -90,6 +90,7 @@ export const readingDetail = {
 };
 
 export const recordForm = {
+  sayWhyNot: 'Say why the check does not apply here.',
   pass: 'Pass',
   fail: 'Fail',
   notApplicable: 'Not applicable',

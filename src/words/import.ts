@@ -27,6 +27,7 @@ export const columnsSheet = {
   columns: 'Columns',
   notUsed: (unused: string, unused2: number) => `Not used: ${unused}${unused2 > 6 ? ' …' : ''}`,
   columnNeeded: (column: string, needed: boolean) => `${column}${needed ? ' (needed)' : ''}`,
+  chooseColumn: (column: string) => `Choose the column that holds the ${column}.`,
   chooseAColumn: 'choose a column',
   notInTheFile: 'not in the file',
   emptyInTheFirst: 'empty in the first rows',

@@ -162,10 +162,7 @@ export function PartDialog({ built, editing, timeZones, onClose, onSaved }: Prop
   const change = (key: string, value: Form[string]) =>
     setForm((old) => ({ ...old, [key]: value, ...followers(built, kind, key, value) }));
   const clash =
-    save.error instanceof ApiError &&
-    save.error.status === 409 &&
-    id !== null &&
-    save.error.message.startsWith('Somebody changed');
+    save.error instanceof ApiError && save.error.status === 409 && id !== null && save.error.current !== null;
   const error = save.error ?? remove.error ?? rebase.error;
   const title =
     id === null

@@ -180,7 +180,7 @@ export function PartsSheets({ built, mayWrite, onEdit, onToken }: Props) {
             t.strings.map((s) => nameOf(built, 'string', s)).join(', '),
           )
         }
-        blocked={built.zones.length === 0 ? 'A transmitter needs a zone first.' : null}
+        blocked={built.zones.length === 0 ? partsSheets.transmitterNeedsZone : null}
       />
     </>
   );
@@ -209,7 +209,7 @@ export function SiteSheets({ built, mayWrite, onEdit }: Omit<Props, 'onToken'>) 
         detail={(z) =>
           `${nameOf(built, 'initiator', z.initiator) ?? ''}; ${stringsOn(built, (s) => s.zone === z.id)}`
         }
-        blocked={built.initiators.length === 0 ? 'A zone needs an initiator first.' : null}
+        blocked={built.initiators.length === 0 ? partsSheets.zoneNeedsInitiator : null}
       />
       <Parts
         {...common}
@@ -224,23 +224,25 @@ export function SiteSheets({ built, mayWrite, onEdit }: Omit<Props, 'onToken'>) 
             s.plane === null ? undefined : (nameOf(built, 'plane', s.plane) ?? ''),
           )
         }
-        blocked={built.loggers.length === 0 ? 'A sensor needs a logger first.' : null}
+        blocked={built.loggers.length === 0 ? partsSheets.sensorNeedsLogger : null}
       />
       <Sheet id="parts-site" title={partsSheets.site} level={3}>
         <dl className="grid gap-2">
-          <Fact name="Place">
+          <Fact name={partsSheets.place}>
             {site.place || partsSheets.notEntered}; {degrees(site.latitude)}, {degrees(site.longitude)}
           </Fact>
-          <Fact name="Time zone">{site.timeZone.replaceAll('_', ' ')}</Fact>
-          <Fact name="Rules">
+          <Fact name={partsSheets.timeZone}>{site.timeZone.replaceAll('_', ' ')}</Fact>
+          <Fact name={partsSheets.rules}>
             {choice(RULE_SETS, site.ruleSet)}; {choice(STRUCTURES, site.structure).toLowerCase()}
           </Fact>
-          <Fact name="Air, coldest and hottest">
+          <Fact name={partsSheets.airColdestHottest}>
             {site.temperatureMin === null ? partsSheets.notEntered : celsius(site.temperatureMin)},{' '}
             {site.temperatureMax === null ? partsSheets.notEntered : celsius(site.temperatureMax)}
           </Fact>
-          <Fact name="Shutdown switch">{site.shutdownSwitchPlace || partsSheets.placeNotEntered}</Fact>
-          <Fact name="Contact">
+          <Fact name={partsSheets.shutdownSwitch}>
+            {site.shutdownSwitchPlace || partsSheets.placeNotEntered}
+          </Fact>
+          <Fact name={partsSheets.contact}>
             {[site.contactName, site.contactPhone].filter((c) => c !== '').join(', ') ||
               partsSheets.notEntered}
           </Fact>

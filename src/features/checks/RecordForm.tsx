@@ -110,9 +110,7 @@ export function RecordForm({ sheet, row, cell, onSaved, onCancel }: Props) {
           label={wantsReason ? recordForm.whyItDoesNot : recordForm.whatIsWrong}
           maxLength={500}
           value={reason}
-          error={
-            tried && noReason ? 'Say why the check does not apply here.' : (refused?.fault('reason') ?? null)
-          }
+          error={tried && noReason ? recordForm.sayWhyNot : (refused?.fault('reason') ?? null)}
           onChange={(event) => setReason(event.target.value)}
         />
       )}

@@ -7,7 +7,7 @@ import { Sheet } from '../../components/ui/Sheet';
 import { Table } from '../../components/ui/Table';
 import { number } from '../../drawings/numbers';
 import type { ChangeKind, ImportOutcome } from '../../schemas/api/import';
-import { CHANGE_NAMES, changePlace, changeWords } from './words';
+import { CHANGE_NAMES, changePlace, changeWords } from '../../words/import-sentences';
 import { changesSheet } from '../../words/import';
 
 interface Props {

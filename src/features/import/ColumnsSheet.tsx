@@ -49,9 +49,7 @@ export function ColumnsSheet({ facts, match, onMatch }: Props) {
                 ...facts.headers.map((header, i) => ({ value: String(i), label: header })),
               ]}
               onChange={(value) => onMatch(column, value === '' ? null : Number(value))}
-              error={
-                needed && index === null ? `Choose the column that holds the ${COLUMN_LABELS[column]}.` : null
-              }
+              error={needed && index === null ? columnsSheet.chooseColumn(COLUMN_LABELS[column]) : null}
               hint={
                 index === null
                   ? undefined

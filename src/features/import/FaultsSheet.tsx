@@ -9,7 +9,7 @@ import { FAULT_CODES, type CellFault, type FaultCode } from '../../domain/commis
 import { number } from '../../drawings/numbers';
 import { harmlessCell } from '../../schemas/csv-cell';
 import { cellKey } from './desk';
-import { FAULT_NAMES } from './words';
+import { FAULT_NAMES } from '../../words/import-sentences';
 import { faultsSheet } from '../../words/import';
 
 interface Props {

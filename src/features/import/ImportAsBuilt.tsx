@@ -11,7 +11,7 @@ import { FaultsSheet } from './FaultsSheet';
 import { FileSheet } from '../../components/table-file/FileSheet';
 import { ProgressLine } from '../../components/table-file/ProgressLine';
 import { faultsOf, useImport } from './use-import';
-import { finding } from './words';
+import { finding } from '../../words/import-sentences';
 import { importAsBuilt } from '../../words/import';
 
 /** Strings and serials from a file: read, matched, checked, looked at, and then written all at once. */

@@ -5,7 +5,7 @@ import { ApiError } from '../../lib/api';
 import type { ImportOutcome } from '../../schemas/api/import';
 import { Desk, type CheckOrder, type FileFacts } from './desk';
 import { faultsOf } from './use-import';
-import { changeWords, finding, summary } from './words';
+import { changeWords, finding, summary } from '../../words/import-sentences';
 
 const TEXT = [
   'String;Pos;Serial;Plane;Colour',

@@ -15,7 +15,7 @@ import { DeskClient } from '../../components/table-file/desk-client';
 import type { DeskAnswer, DeskOrder } from './check.worker';
 import type { Separator } from '../../components/table-file/separators';
 import { sendImport, type Progress } from './send';
-import { STEP_WORDS } from './words';
+import { STEP_WORDS } from '../../words/import-sentences';
 import { importUseImport } from '../../words/import';
 
 export const FILE_MAX_BYTES = 20 * 1024 * 1024;

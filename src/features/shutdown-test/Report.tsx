@@ -110,10 +110,10 @@ function Fact({ name, children }: { name: string; children: ReactNode }) {
 }
 
 const LIGHTS = {
-  bright: 'bright',
-  dull: 'dull',
+  bright: shutdownTestReportReport.bright,
+  dull: shutdownTestReportReport.dull,
   snow: shutdownTestReportReport.snowOnTheModules,
-  night: 'night',
+  night: shutdownTestReportReport.night,
 } as const;
 
 function Whole({ report, record: signed }: { report: ShutdownTestReport; record: SignedTest }) {
@@ -150,22 +150,22 @@ function Whole({ report, record: signed }: { report: ShutdownTestReport; record:
           >
             <RoundDrawing facts={facts} strings={strings} round={round} seen={seen} limits={verdict.limits} />
             <dl className="mt-2 grid gap-x-6 sm:grid-cols-2">
-              <Fact name="Command, as the logger reported it">
+              <Fact name={shutdownTestReportReport.commandReported}>
                 {seen?.command
                   ? `${clockSeconds(seen.command.since, site.timeZone)}, ${seen.command.where}${seen.command.by ? shutdownTestReportReport.by(seen.command.by) : ''}`
                   : shutdownTestReportReport.notReported}
               </Fact>
-              <Fact name="Command, as a person noted it">
+              <Fact name={shutdownTestReportReport.commandNoted}>
                 {round.operated
                   ? `${clockSeconds(round.operated.at, site.timeZone)}, ${round.operated.by}`
                   : shutdownTestReportReport.notNoted}
               </Fact>
-              <Fact name="Release, as the logger reported it">
+              <Fact name={shutdownTestReportReport.releaseReported}>
                 {seen?.release
                   ? clockSeconds(seen.release.since, site.timeZone)
                   : shutdownTestReportReport.notReported}
               </Fact>
-              <Fact name="Release, as a person noted it">
+              <Fact name={shutdownTestReportReport.releaseNoted}>
                 {round.released
                   ? `${clockSeconds(round.released.at, site.timeZone)}, ${round.released.by}`
                   : shutdownTestReportReport.notNoted}
@@ -203,24 +203,24 @@ function Whole({ report, record: signed }: { report: ShutdownTestReport; record:
       <div className="grid gap-5 lg:grid-cols-2">
         <Sheet id="people" title={shutdownTestReportReport.peopleAndCircumstances}>
           <dl>
-            <Fact name="On site">{plan?.onSite}</Fact>
-            <Fact name="Operated the initiator">{plan?.operator}</Fact>
-            {plan?.others && <Fact name="Present">{plan.others}</Fact>}
-            <Fact name="Initiator">
+            <Fact name={shutdownTestReportReport.onSite}>{plan?.onSite}</Fact>
+            <Fact name={shutdownTestReportReport.operator}>{plan?.operator}</Fact>
+            {plan?.others && <Fact name={shutdownTestReportReport.present}>{plan.others}</Fact>}
+            <Fact name={shutdownTestReportReport.initiator}>
               {facts.initiator.name}
               {facts.initiator.place && `, ${facts.initiator.place}`}
             </Fact>
-            <Fact name="Light and weather">
+            <Fact name={shutdownTestReportReport.lightAndWeather}>
               {plan && LIGHTS[plan.light]}
               {plan?.weather && `, ${plan.weather}`}
             </Fact>
             {caution && (
-              <Fact name="Caution accepted">
+              <Fact name={shutdownTestReportReport.cautionAccepted}>
                 {caution.name}, {fullTime(caution.at, site.timeZone)}
               </Fact>
             )}
             {record.remarks.map((r) => (
-              <Fact key={r.at} name={`Remark of ${r.by}`}>
+              <Fact key={r.at} name={shutdownTestReportReport.remarkOf(r.by)}>
                 {r.text}
               </Fact>
             ))}
@@ -229,16 +229,18 @@ function Whole({ report, record: signed }: { report: ShutdownTestReport; record:
         <Sheet id="instrument" title={shutdownTestReportReport.instrument}>
           {instrument ? (
             <dl>
-              <Fact name="Make and model">{instrument.name}</Fact>
-              <Fact name="Serial number">{instrument.serial}</Fact>
-              <Fact name="Rating">
+              <Fact name={shutdownTestReportReport.makeAndModel}>{instrument.name}</Fact>
+              <Fact name={shutdownTestReportReport.serialNumber}>{instrument.serial}</Fact>
+              <Fact name={shutdownTestReportReport.rating}>
                 {instrument.category === 'none'
                   ? shutdownTestReportReport.noCategoryMarked
                   : instrument.category}
                 , {volts(instrument.ratedV)}
               </Fact>
-              <Fact name="Calibrated on">{longDate(`${instrument.calibratedOn}T12:00:00Z`, 'UTC')}</Fact>
-              <Fact name="Proved on a known source">
+              <Fact name={shutdownTestReportReport.calibratedOn}>
+                {longDate(`${instrument.calibratedOn}T12:00:00Z`, 'UTC')}
+              </Fact>
+              <Fact name={shutdownTestReportReport.proved}>
                 {instrument.provedBefore
                   ? shutdownTestReportReport.beforeTheTest
                   : shutdownTestReportReport.notBeforeTheTest}
@@ -257,21 +259,21 @@ function Whole({ report, record: signed }: { report: ShutdownTestReport; record:
       </div>
       <Sheet id="signature" title={shutdownTestReportReport.signature}>
         <dl className="grid gap-x-6 sm:grid-cols-2">
-          <Fact name="Signed by">
+          <Fact name={shutdownTestReportReport.signedByWhom}>
             {shutdownTestReportReport.withThePasswordEntered(signed.signature.name, signed.signature.role)}
           </Fact>
-          <Fact name="At">{fullTime(signed.signature.at, site.timeZone)}</Fact>
-          <Fact name="Fingerprint as signed (SHA-256)">
+          <Fact name={shutdownTestReportReport.at}>{fullTime(signed.signature.at, site.timeZone)}</Fact>
+          <Fact name={shutdownTestReportReport.fingerprintSigned}>
             <span className="break-all">{report.fingerprint}</span>
           </Fact>
-          <Fact name="Taken again from the stored data">
+          <Fact name={shutdownTestReportReport.fingerprintAgain}>
             <span className="break-all">{report.recomputed}</span>{' '}
             <strong className="font-semibold">
               {report.matches ? shutdownTestReportReport.theyAreTheSame : shutdownTestReportReport.theyDiffer}
             </strong>
           </Fact>
           {report.follows && (
-            <Fact name="Repeats">
+            <Fact name={shutdownTestReportReport.repeats}>
               <a
                 className="text-petrol hover:underline"
                 href={paths.shutdownTest(site.id, report.follows.test)}

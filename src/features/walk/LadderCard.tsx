@@ -6,7 +6,7 @@ import { withQuery } from '../../lib/api';
 import type { WalkPage, WalkView } from '../../schemas/api/walk';
 import { paths } from '../../schemas/paths';
 import { chosenStops, readingsOf, sparesOf, stopsOfPage } from './stops';
-import { STOP_WORDS, walkHeading } from './words';
+import { STOP_WORDS, walkHeading } from '../../words/walk-sentences';
 import { ladderCard } from '../../words/walk';
 
 /** Stops and strings that a card of one screen carries; more need two trips. */

@@ -8,7 +8,7 @@ import type { WalkPage } from '../../schemas/api/walk';
 import { paths } from '../../schemas/paths';
 import type { Stop } from './stops';
 import type { Tick } from './ticks';
-import { STOP_TASKS, STOP_WORDS } from './words';
+import { STOP_TASKS, STOP_WORDS } from '../../words/walk-sentences';
 import { stopList } from '../../words/walk';
 
 const slotOf = (page: WalkPage, stringName: string, position: number | null): SlotNow | undefined =>

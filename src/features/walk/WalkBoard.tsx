@@ -17,7 +17,7 @@ import { StopList } from './StopList';
 import { asBuiltChanged, patchWalk, walkKey, walkQuery } from './query';
 import { chosenStops, drawnWalk, sparesOf, stopsOfPage, stopsParam, type Stop } from './stops';
 import { useTicks } from './ticks';
-import { walkHeading, walkSentence } from './words';
+import { walkHeading, walkSentence } from '../../words/walk-sentences';
 import { walkBoard } from '../../words/walk';
 
 const DEFAULTS: WalkView = { stops: '', view: 'walk', string: '' };

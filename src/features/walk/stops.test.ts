@@ -3,7 +3,7 @@ import type { SlotNow, StringNow } from '../../schemas/api/now';
 import type { WalkPage, WalkView } from '../../schemas/api/walk';
 import { chosenStops, keysOf, readingsOf, sparesOf, stopsOfPage, stopsParam } from './stops';
 import { parseTicks } from './ticks';
-import { walkHeading, walkSentence } from './words';
+import { walkHeading, walkSentence } from '../../words/walk-sentences';
 
 const ID = '00000000-0000-4000-8000-00000000000';
 const slot = (position: number, more: Partial<SlotNow> = {}): SlotNow => ({

@@ -169,6 +169,7 @@ export async function changePart(
         field: `values.${c.key}`,
         message: clashWords(parts, kind, c.key, c.theirs, who.get(c.key), site.timeZone),
       })),
+      current: Object.fromEntries(merged.clashes.map((c) => [c.key, c.theirs])),
     });
   }
   const { changes } = merged;

@@ -1,30 +1,28 @@
-import type { ImportColumn } from '../../domain/commissioning/import/columns';
-import { COLUMN_LABELS } from '../../words/domain-import';
-import type { Change } from '../../domain/commissioning/import/plan';
-import type { CellFault, FaultCode } from '../../domain/commissioning/import/table';
-import { number } from '../../drawings/numbers';
-import type { ChangeKind, ImportOutcome } from '../../schemas/api/import';
-import type { ImportStep } from '../../schemas/lists-and-limits';
-
-const plural = (n: number, one: string, many = `${one}s`): string => `${number(n)} ${n === 1 ? one : many}`;
+import type { ImportColumn } from '../domain/commissioning/import/columns';
+import type { Change } from '../domain/commissioning/import/plan';
+import type { CellFault, FaultCode } from '../domain/commissioning/import/table';
+import type { ChangeKind, ImportOutcome } from '../schemas/api/import';
+import type { ImportStep } from '../schemas/lists-and-limits';
+import { counted } from './domain-counts';
+import { COLUMN_LABELS } from './domain-import';
 
 export const CHANGE_NAMES: Record<ChangeKind, (n: number) => string> = {
-  placed: (n) => `${plural(n, 'unit')} placed`,
-  moved: (n) => `${plural(n, 'unit')} moved`,
-  replaced: (n) => `${plural(n, 'unit')} replaced`,
-  string_made: (n) => `${plural(n, 'string')} made`,
-  string_grows: (n) => `${plural(n, 'string')} made longer`,
-  module_type: (n) => `${plural(n, 'module type')} changed`,
-  roof_place: (n) => `${plural(n, 'place')} on the roof changed`,
+  placed: (n) => `${counted(n, 'unit')} placed`,
+  moved: (n) => `${counted(n, 'unit')} moved`,
+  replaced: (n) => `${counted(n, 'unit')} replaced`,
+  string_made: (n) => `${counted(n, 'string')} made`,
+  string_grows: (n) => `${counted(n, 'string')} made longer`,
+  module_type: (n) => `${counted(n, 'module type')} changed`,
+  roof_place: (n) => `${counted(n, 'place')} on the roof changed`,
 };
 
 /** One change in a sentence. */
 export function changeWords(change: Change): string {
   switch (change.kind) {
     case 'string_made':
-      return `new string with ${plural(change.slots, 'position')}`;
+      return `new string with ${counted(change.slots, 'position')}`;
     case 'string_grows':
-      return `grows from ${change.from} to ${plural(change.to, 'position')}`;
+      return `grows from ${change.from} to ${counted(change.to, 'position')}`;
     case 'placed':
       return `${change.serial} comes to an empty slot`;
     case 'replaced':
@@ -92,7 +90,7 @@ export interface Standing {
 export function finding({ rows, missing, faults, outcome }: Standing): Finding {
   if (outcome?.written)
     return {
-      heading: `${plural(outcome.rows, 'row')} ${outcome.rows === 1 ? 'is' : 'are'} in the as-built`,
+      heading: `${counted(outcome.rows, 'row')} ${outcome.rows === 1 ? 'is' : 'are'} in the as-built`,
       sentence: `${summary(outcome)}. The history keeps who did it and why.`,
     };
   if (rows === null)
@@ -104,34 +102,34 @@ export function finding({ rows, missing, faults, outcome }: Standing): Finding {
   if (missing.length > 0)
     return {
       heading: `Which column is the ${missing.map((c) => COLUMN_LABELS[c]).join(', which the ')}?`,
-      sentence: `${plural(rows, 'row')} ${rows === 1 ? 'is' : 'are'} read. Choose the columns below, then the cells are checked.`,
+      sentence: `${counted(rows, 'row')} ${rows === 1 ? 'is' : 'are'} read. Choose the columns below, then the cells are checked.`,
     };
   const bad = (outcome?.faults ?? faults ?? []).filter((f) => f.weight === 'fault').length;
   const badCount = outcome ? outcome.faultCount : bad;
   if (badCount > 0)
     return {
-      heading: `${plural(badCount, 'cell')} of ${plural(rows, 'row')} ${badCount === 1 ? 'needs' : 'need'} a look`,
+      heading: `${counted(badCount, 'cell')} of ${counted(rows, 'row')} ${badCount === 1 ? 'needs' : 'need'} a look`,
       sentence:
         'An import is all or nothing: each is marked below with its row, its column and what would do.',
     };
   if (!outcome)
     return faults
       ? {
-          heading: `${plural(rows, 'row')} read without a fault`,
+          heading: `${counted(rows, 'row')} read without a fault`,
           sentence: 'The server compares them with the as-built.',
         }
       : {
-          heading: `Checking ${plural(rows, 'row')}`,
+          heading: `Checking ${counted(rows, 'row')}`,
           sentence: 'Every cell is looked at; nothing is written.',
         };
   const changes = Object.values(outcome.counts).reduce((a, b) => a + b, 0);
   if (changes === 0)
     return {
       heading: 'Nothing to change',
-      sentence: `The as-built says the same as the ${plural(rows, 'row')} of this file already.`,
+      sentence: `The as-built says the same as the ${counted(rows, 'row')} of this file already.`,
     };
   return {
-    heading: `${plural(rows, 'row')} would make ${plural(changes, 'change')}`,
+    heading: `${counted(rows, 'row')} would make ${counted(changes, 'change')}`,
     sentence: `${summary(outcome)}. Look at them below, say why, then import.`,
   };
 }
@@ -141,7 +139,7 @@ export function summary(outcome: ImportOutcome): string {
   const parts = (Object.entries(outcome.counts) as [ChangeKind, number][]).map(([kind, n]) =>
     CHANGE_NAMES[kind](n),
   );
-  if (outcome.unchanged > 0) parts.push(`${plural(outcome.unchanged, 'row')} as before`);
+  if (outcome.unchanged > 0) parts.push(`${counted(outcome.unchanged, 'row')} as before`);
   const text = parts.join(', ');
   return text.charAt(0).toUpperCase() + text.slice(1);
 }

@@ -1,7 +1,7 @@
-import { planeWords } from '../../domain/output/plane-words';
-import { countAtStart, listed } from '../../drawings/numbers';
-import type { WalkPage } from '../../schemas/api/walk';
-import type { Stop, StopKind } from './stops';
+import type { Stop, StopKind } from '../domain/commissioning/walk';
+import { countAtStart, listed } from '../drawings/numbers';
+import type { WalkPage } from '../schemas/api/walk';
+import { planeWithin } from './domain-planes';
 
 export const STOP_WORDS: Record<StopKind, string> = {
   not_shutting_down: 'not shutting down',
@@ -28,7 +28,7 @@ export function walkHeading(page: WalkPage, stops: readonly Stop[]): string {
   const planes = new Set(stops.flatMap((s) => page.roof.find((r) => r.stringId === s.stringId)?.plane ?? []));
   const where =
     planes.size === 1
-      ? ` on the ${planeWords([...planes][0] ?? '')}`
+      ? ` on the ${planeWithin([...planes][0] ?? '')}`
       : ` on ${countAtStart(planes.size).toLowerCase()} planes`;
   return `${countAtStart(stops.length)} ${stops.length === 1 ? 'stop' : 'stops'}${planes.size > 0 ? where : ''}`;
 }
