@@ -1,6 +1,13 @@
 import { number, percent, quantity } from '../drawings/numbers';
 import { clock, fullTime } from '../drawings/times';
 
+export const chartCsvHeads = {
+  time: 'time (UTC)',
+  line: (name: string, unit: string) => `${name} (${unit})`,
+  bandFrom: (name: string, unit: string) => `${name} from (${unit})`,
+  bandTo: (name: string, unit: string) => `${name} to (${unit})`,
+};
+
 export const chartLegend = {
   lines: 'Lines',
 };

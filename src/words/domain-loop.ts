@@ -13,6 +13,7 @@ export const loopThan = (than: string): string =>
 
 /** Why there is no fit, after a colon. */
 export const loopFitSaid = {
+  noSamples: 'no samples',
   tooFewSamples: (samples: number, needed: number) =>
     `${samples} steady samples with current, ${needed} are needed`,
   tooNarrow: (spanA: number, neededA: number) =>

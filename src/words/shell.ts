@@ -83,3 +83,10 @@ export const staffLayout = {
   wakelineToTheFleet: 'Wakeline, to the fleet',
   main: 'Main',
 };
+
+/** What a search found: what it is called, and where it is. */
+export const searchHits = {
+  string: (name: string | null) => `String ${name ?? ''}`,
+  unitAt: (site: string, string: string | null, position: number | null) =>
+    `${site}, ${string ?? ''} position ${position ?? '–'}`,
+};

@@ -1,4 +1,5 @@
 import { harmlessCell } from '../../schemas/csv-cell';
+import { chartCsvHeads } from '../../words/charts';
 import { valueAt, type ChartModel } from './model';
 
 const NEEDS_QUOTES = /[",\r\n]|^\s|\s$/;
@@ -14,10 +15,13 @@ export function chartCsv(model: ChartModel): string {
     (a, b) => a - b,
   );
   const head = [
-    'time (UTC)',
-    ...model.lines.map((l) => `${l.name} (${model.unit})`),
+    chartCsvHeads.time,
+    ...model.lines.map((l) => chartCsvHeads.line(l.name, model.unit)),
     ...(model.band
-      ? [`${model.band.name} from (${model.unit})`, `${model.band.name} to (${model.unit})`]
+      ? [
+          chartCsvHeads.bandFrom(model.band.name, model.unit),
+          chartCsvHeads.bandTo(model.band.name, model.unit),
+        ]
       : []),
   ];
   const rows = times.map((at) => [

@@ -13,6 +13,7 @@ import type { PlaneReference } from '../../domain/output/plane-reference';
 import { asIngest } from '../db/transaction';
 import { pastFits, type LoopFitRow } from '../queries/loop-fits';
 import { loopReading, loopRows, type LoopRow, type OutputString } from '../queries/output-series';
+import { loopFitSaid } from '../../words/domain-loop';
 import { loopCause } from './night-findings';
 import type { NightSeries, NightString, SeriesSite } from './plane-series';
 
@@ -57,7 +58,7 @@ export async function fitLoops(
   );
   const days = last - first + 1;
   return loops.map(({ string }): LoopJudged => {
-    const fit = fits.get(string.id) ?? 'no samples';
+    const fit = fits.get(string.id) ?? loopFitSaid.noSamples;
     const past = pasts.get(string.id) ?? null;
     const like = loops.filter((o) => o.string.id !== string.id && o.string.unitTypeId === string.unitTypeId);
     const known = like.flatMap((o): [LoopFit, OutputString][] => {

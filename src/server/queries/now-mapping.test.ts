@@ -1,7 +1,8 @@
 import { describe, expect, it } from 'vitest';
 import { stringNow } from '../../schemas/api/now';
 import { planeWords } from '../../domain/output/plane-words';
-import { commandOf, findingWords, mapStrings } from './now-mapping';
+import { findingWords } from '../../domain/causes/string-finding';
+import { commandOf, mapStrings } from './now-mapping';
 import type { SaidRow, SiteRow, StringRow } from './now-rows';
 
 const NOON = new Date('2026-06-21T12:00:00Z');

@@ -1,11 +1,11 @@
 import type { ModuleType } from '../../domain/equipment/module-type';
-import { expectedBand, expectedModule, type Expected, type ExpectedFrom } from '../../domain/output/expected';
-import { planeWords } from '../../domain/output/plane-words';
+import { findingWords } from '../../domain/causes/string-finding';
+import { expectedBand, expectedModule, type Expected } from '../../domain/output/expected';
+import { expectedFromWords } from '../../domain/output/plane-words';
 import { median } from '../../domain/output/robust';
 import { clearSkyInPlane } from '../../domain/photovoltaics/irradiance/clear-sky-plane';
-import { UNIT_STATES, VERDICTS, type StringFinding } from '../../domain/verdicts/codes';
+import { UNIT_STATES, VERDICTS } from '../../domain/verdicts/codes';
 import { DARK_BELOW_ELEVATION } from '../../domain/verdicts/context';
-import type { FindingEvidence } from '../../domain/verdicts/memory';
 import type { CommandNow, Counts, SlotNow, StringNow } from '../../schemas/api/now';
 import type { SaidRow, SiteRow, StringRow } from './now-rows';
 
@@ -54,29 +54,6 @@ export function commandOf(
     : null;
 }
 
-/** A string's finding in one sentence. */
-export function findingWords(kind: StringFinding, evidence: FindingEvidence | null): string {
-  const volts = evidence ? `${Math.round(evidence.measuredV)} V` : 'A voltage';
-  const where = evidence?.scope === 'input' ? 'at the input that it shares' : 'on its conductors';
-  switch (kind) {
-    case 'not_shutting_down':
-      return `${volts} ${where} while shutdown is commanded; which unit passes is not known`;
-    case 'stuck_positions_unknown': {
-      const range = evidence?.unitsRange;
-      const count = !range ? 'Some' : range[0] === range[1] ? `${range[0]}` : `${range[0]} to ${range[1]}`;
-      return `${count} of ${evidence?.ofN ?? 'its'} units do not pass, by the voltage ${where}; positions unknown`;
-    }
-    case 'unexplained_voltage':
-      return `${volts} ${where}, which its units' own voltages do not explain`;
-  }
-}
-
-const FROM_WORDS: Record<ExpectedFrom, (plane: string) => string> = {
-  other_strings: (plane) => `the other strings on the ${plane}`,
-  own_units: () => 'the other units of this string',
-  sensor: () => 'the irradiance sensor and the module’s datasheet',
-  clear_sky: () => 'a clear sky and the module’s datasheet',
-};
 interface Measured {
   row: StringRow;
   slots: SlotNow[];
@@ -241,7 +218,7 @@ function mapped(own: Measured, around: Around): StringNow {
     expectedVoltage: expected ? expected.voltage * units.length : null,
     expectedBand: expected ? expectedBand(expected, units.length) : null,
     expectedInShutdown: inForce ? units.length * row.shutdownVoltage : null,
-    expectedFrom: expected ? FROM_WORDS[expected.from](planeWords(plane?.name ?? 'same plane')) : '',
+    expectedFrom: expected ? expectedFromWords(expected.from, plane?.name ?? null) : '',
     expectedStrings: expected?.strings ?? 0,
     command,
     dark,
