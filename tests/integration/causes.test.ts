@@ -1,6 +1,8 @@
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import { GET as causesCsvRoute } from '../../src/pages/api/causes.csv';
 import { judgeAllCauses, judgeSiteCauses } from '../../src/server/jobs/judge-causes';
 import { testDatabase, type TestDatabase } from '../support/database';
+import { ask } from '../support/endpoint';
 import { testFleet, type TestFleet } from '../support/fleet';
 import { command, stand, type Standing } from '../support/standing';
 
@@ -183,5 +185,23 @@ describe('what is no alarm', () => {
     for (const m of [210, 211, 214]) await judge(KESTREL, m);
     expect((await kinds()).map((e) => e.kind)).toEqual(['gateway_silent', 'gateway_back']);
     expect((await rows(KESTREL)).filter((r) => r.open)).toEqual([]);
+  });
+
+  it('all of them are in the table to download, in the order of the list', async () => {
+    const MANY = 1200; // more than a page of it
+    await db.owner.query(
+      `insert into cause (site_id, key, kind, headline, evidence, confidence, since, opened_at, changed_at, loss_wh)
+       select $1, 'made:' || n, 'weak_unit', 'Cause ' || n, '', 0.5, $2, $2, $2, n * 1000 from generate_series(1, $3::int) n`,
+      [fleet.site(QUAYSIDE).id, at(300), MANY],
+    );
+    const table = await ask(causesCsvRoute, {
+      actor: await fleet.actor('analyst@lowfield.example'),
+      path: '/api/causes.csv?kind=weak_unit&sort=loss',
+    });
+    const lines = (await table.text()).trim().split('\r\n');
+    expect(lines[0]).toContain('site,kind,what,strings,units');
+    expect(lines.slice(1).map((line) => line.split(',')[2])).toEqual(
+      Array.from({ length: MANY }, (_, i) => `Cause ${MANY - i}`),
+    );
   });
 });

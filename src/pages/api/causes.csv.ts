@@ -1,16 +1,23 @@
 import { kindWords } from '../../features/causes/words';
 import { causesView } from '../../schemas/api/causes';
 import { endpoint } from '../../server/http/endpoint';
-import { currencyOf, listCauses } from '../../server/queries/causes-list';
-import { csvResponse } from '../../server/reports/csv';
+import { causesInOrder, causesOf, currencyOf } from '../../server/queries/causes-list';
+import { csvPages, ROWS_A_PAGE } from '../../server/reports/csv-pages';
 import { causeHeads } from '../../words/csv-heads';
 
-const MOST_ROWS = 20_000;
-
-export const GET = endpoint({ permission: 'cause.read', query: causesView }, async ({ tx, query }) => {
-  const currency = await currencyOf(tx);
-  return csvResponse(
+export const GET = endpoint({ permission: 'cause.read', query: causesView }, async (call) => {
+  const currency = await currencyOf(call.tx);
+  const all = await causesInOrder(call.tx, call.query);
+  return csvPages(
+    call,
     'causes',
+    async (tx, from: number | undefined = 0) => {
+      const to = from + ROWS_A_PAGE;
+      return {
+        rows: await causesOf(tx, all.slice(from, to), currency),
+        next: to < all.length ? to : null,
+      };
+    },
     [
       { header: causeHeads.site, value: (c) => c.siteName },
       { header: causeHeads.kind, value: (c) => kindWords(c.kind) },
@@ -28,6 +35,5 @@ export const GET = endpoint({ permission: 'cause.read', query: causesView }, asy
       { header: causeHeads.acknowledgedBy, value: (c) => c.acknowledged?.person },
       { header: causeHeads.case, value: (c) => c.openCase?.number },
     ],
-    await listCauses(tx, query, currency, MOST_ROWS),
   );
 });

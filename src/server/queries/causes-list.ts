@@ -59,6 +59,24 @@ export async function currencyOf(tx: Tx): Promise<string | null> {
   return rows[0]?.currency ?? null;
 }
 
+/** What a list shows, in its order; words and values of `bindingsOf`. */
+const shown = (view: CausesView): string => `
+  ${SITE_VISIBLE}
+  and ${{ open: 'c.closed_at is null', over: `c.closed_at > now() - interval '${OVER_DAYS} days'`, all: `(c.closed_at is null or c.closed_at > now() - interval '${OVER_DAYS} days')` }[view.show]}
+  ${view.kind === 'any' ? '' : 'and c.kind = :kind'} ${view.site ? 'and site.ref = :site' : ''}
+  ${
+    view.q
+      ? `and (c.headline ilike :q or site.name ilike :q or exists (
+           select from jsonb_array_elements(c.units) u where u ->> 'serial' ilike :q or u ->> 'stringName' ilike :q))`
+      : ''
+  }
+  order by c.closed_at is not null, ${ORDER[view.sort]}, c.id`;
+const bindingsOf = (view: CausesView): Record<string, string> => ({
+  kind: view.kind,
+  site: view.site ?? '',
+  q: `%${view.q.replace(/[\\%_]/g, (c) => `\\${c}`)}%`,
+});
+
 export async function listCauses(
   tx: Tx,
   view: CausesView,
@@ -66,23 +84,31 @@ export async function listCauses(
   limit: number,
 ): Promise<CauseItem[]> {
   const { rows } = await tx.raw<{ rows: Row[] }>(
-    `select ${ITEM} from ${FROM}
-     where ${SITE_VISIBLE}
-       and ${{ open: 'c.closed_at is null', over: `c.closed_at > now() - interval '${OVER_DAYS} days'`, all: `(c.closed_at is null or c.closed_at > now() - interval '${OVER_DAYS} days')` }[view.show]}
-       ${view.kind === 'any' ? '' : 'and c.kind = :kind'} ${view.site ? 'and site.ref = :site' : ''}
-       ${
-         view.q
-           ? `and (c.headline ilike :q or site.name ilike :q or exists (
-                select from jsonb_array_elements(c.units) u where u ->> 'serial' ilike :q or u ->> 'stringName' ilike :q))`
-           : ''
-       }
-     order by c.closed_at is not null, ${ORDER[view.sort]}, c.id limit :limit`,
-    {
-      kind: view.kind,
-      site: view.site ?? '',
-      q: `%${view.q.replace(/[\\%_]/g, (c) => `\\${c}`)}%`,
-      limit,
-    },
+    `select ${ITEM} from ${FROM} where ${shown(view)} limit :limit`,
+    { ...bindingsOf(view), limit },
+  );
+  return rows.map((r) => itemOf(r, currency));
+}
+
+/** Identifiers of all that a list shows, in its order. */
+export async function causesInOrder(tx: Tx, view: CausesView): Promise<string[]> {
+  const { rows } = await tx.raw<{ rows: { id: string }[] }>(
+    `select c.ref as id from ${FROM} where ${shown(view)}`,
+    bindingsOf(view),
+  );
+  return rows.map((r) => r.id);
+}
+
+/** These causes in this order; without those that are gone. */
+export async function causesOf(
+  tx: Tx,
+  refs: readonly string[],
+  currency: string | null,
+): Promise<CauseItem[]> {
+  const { rows } = await tx.raw<{ rows: Row[] }>(
+    `select ${ITEM} from ${FROM} join unnest(:refs::uuid[]) with ordinality listed (ref, place) on listed.ref = c.ref
+     where ${SITE_VISIBLE} order by listed.place`,
+    { refs: [...refs] },
   );
   return rows.map((r) => itemOf(r, currency));
 }
