@@ -12,6 +12,7 @@ import { justWrittenCookie } from './server/http/just-written';
 import { asReader } from './server/http/reader';
 import { problem } from './server/http/problem';
 import { currentRequest, inRequest } from './server/request';
+import { doorRefusals } from './words/refusals';
 
 /** Who somebody is takes a database milliseconds; without an answer the page says that there is none. */
 const SIGNED_IN_WITHIN_MS = 12_000;
@@ -49,16 +50,13 @@ async function answer(context: APIContext, next: MiddlewareNext): Promise<Respon
   if (context.isPrerendered) return next();
   if (!SAFE.has(request.method) && !sameOrigin(request.headers))
     return finish(
-      problem(
-        new AppError('forbidden', { message: 'The request came from another site.' }),
-        locals.requestId,
-      ),
+      problem(new AppError('forbidden', { message: doorRefusals.otherSite }), locals.requestId),
       locals,
     );
 
   if (!SAFE.has(request.method) && SECRET_AND_READ.test(context.url.pathname))
     return finish(
-      problem(new AppError('not_found', { message: 'A shared page is only read.' }), locals.requestId),
+      problem(new AppError('not_found', { message: doorRefusals.onlyRead }), locals.requestId),
       locals,
     );
 
@@ -78,8 +76,8 @@ async function answer(context: APIContext, next: MiddlewareNext): Promise<Respon
     if (context.url.pathname.startsWith('/api/')) return finish(problem(error, locals.requestId), locals);
     locals.problem = {
       status: 503,
-      title: 'Not reachable just now',
-      message: 'The database does not answer, so Wakeline cannot tell who you are. Try again in a minute.',
+      title: doorRefusals.notReachable,
+      message: doorRefusals.databaseAway,
     };
     return finish(await context.rewrite('/problem'), locals);
   }

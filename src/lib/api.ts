@@ -1,4 +1,5 @@
 /** The browser's way to the API: JSON in and out, problem documents (RFC 9457) as a typed error. */
+import { apiSaid } from '../words/browser';
 
 export interface FieldProblem {
   field: string;
@@ -70,16 +71,16 @@ export async function errorOf(response: Response): Promise<ApiError> {
   if (!isRecord(body))
     return new ApiError(
       response.status,
-      'The server did not answer as expected',
-      `It answered ${response.status} without an explanation. Try again in a minute.`,
+      apiSaid.notAsExpected,
+      apiSaid.noExplanation(response.status),
       [],
       null,
       retryAfterS,
     );
   return new ApiError(
     response.status,
-    typeof body.title === 'string' ? body.title : 'The request failed',
-    typeof body.detail === 'string' ? body.detail : `The server answered ${response.status}.`,
+    typeof body.title === 'string' ? body.title : apiSaid.failed,
+    typeof body.detail === 'string' ? body.detail : apiSaid.answered(response.status),
     fieldsOf(body.fields),
     typeof body.requestId === 'string' ? body.requestId : null,
     retryAfterS,
@@ -106,11 +107,7 @@ export async function api<T>(path: string, call: Call = {}): Promise<T> {
     });
   } catch (error) {
     if (error instanceof DOMException && error.name === 'AbortError') throw error;
-    throw new ApiError(
-      0,
-      'The server is out of reach',
-      'No answer came. Check the connection, then try again; nothing that you typed is lost.',
-    );
+    throw new ApiError(0, apiSaid.outOfReach, apiSaid.noAnswer);
   }
   if (!response.ok) throw await errorOf(response);
   if (response.status === 204) return undefined as T;

@@ -1,4 +1,5 @@
 /** Codes on labels, read by the browser where it can and else by a decoder that we ship. */
+import { cameraSaid } from '../words/browser';
 
 /** What the labels of units carry. */
 const FORMATS = ['code_128', 'data_matrix', 'qr_code'] as const;
@@ -65,10 +66,8 @@ export const openDecoder = async (): Promise<Decoder> => (await browserDecoder()
 
 /** Why the camera can't be used here, in words; null: it can be tried. */
 export function cameraHindrance(): string | null {
-  if (!window.isSecureContext)
-    return 'The camera needs a secure address (https) or localhost. Typing works, and so does a reader that types.';
+  if (!window.isSecureContext) return cameraSaid.insecure;
   const { mediaDevices } = navigator as { mediaDevices?: MediaDevices };
-  if (typeof mediaDevices?.getUserMedia !== 'function')
-    return 'This browser gives pages no camera. Typing works, and so does a reader that types.';
+  if (typeof mediaDevices?.getUserMedia !== 'function') return cameraSaid.none;
   return null;
 }

@@ -1,4 +1,5 @@
 import { openDB, type DBSchema, type IDBPDatabase, type IDBPTransaction } from 'idb';
+import { phoneStoreSaid } from '../words/browser';
 import type { Waiting } from './capture-queue';
 
 /** What the phone keeps: records that wait, bytes of photos, snapshots of sites, and who is signed in here. */
@@ -47,25 +48,11 @@ export class StoreError extends Error {
 export function explainStore(error: unknown): StoreError {
   if (error instanceof StoreError) return error;
   const name = error instanceof Error ? error.name : '';
-  if (name === 'QuotaExceededError')
-    return new StoreError(
-      'full',
-      'The phone has no room left for this. Free some room or send what is waiting, then save again; what you typed stands here.',
-      { cause: error },
-    );
-  if (name === 'VersionError')
-    return new StoreError(
-      'newer',
-      'A newer version of this page has been opened on this phone. Load this page again.',
-      { cause: error },
-    );
+  if (name === 'QuotaExceededError') return new StoreError('full', phoneStoreSaid.full, { cause: error });
+  if (name === 'VersionError') return new StoreError('newer', phoneStoreSaid.newer, { cause: error });
   if (name === 'InvalidStateError' || name === 'SecurityError' || name === 'UnknownError')
-    return new StoreError(
-      'not_allowed',
-      'This browser keeps nothing here: a private window, or storage is switched off. Records can only be sent while there is a network.',
-      { cause: error },
-    );
-  return new StoreError('failed', `The phone could not keep this: ${name || 'no reason given'}. Try again.`, {
+    return new StoreError('not_allowed', phoneStoreSaid.notAllowed, { cause: error });
+  return new StoreError('failed', phoneStoreSaid.failed(name), {
     cause: error,
   });
 }

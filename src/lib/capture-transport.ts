@@ -1,3 +1,4 @@
+import { phoneStoreSaid } from '../words/browser';
 import { PERSON_HEADER } from '../schemas/lists-and-limits';
 import { paths } from '../schemas/paths';
 import { api, ApiError, withQuery, type QueryValue } from './api';
@@ -58,12 +59,7 @@ export async function sendRecord(record: Waiting, transport: Transport): Promise
 
 async function sendPhoto(record: Waiting, transport: Transport): Promise<unknown> {
   const photo = await transport.photo(record.ref);
-  if (!photo)
-    throw new ApiError(
-      422,
-      'The photo is gone',
-      'Its bytes are no longer on this phone. Take it again, or leave it out.',
-    );
+  if (!photo) throw new ApiError(422, phoneStoreSaid.photoGone, phoneStoreSaid.photoGoneRemedy);
   const url = withQuery(paths.api.attachments(record.site), record.body as Record<string, QueryValue>);
   const file = new Blob([photo.bytes], { type: photo.type });
   const share = (sent: number) => transport.progress?.(record.ref, sent);

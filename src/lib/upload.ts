@@ -1,3 +1,4 @@
+import { apiSaid } from '../words/browser';
 import { ApiError, errorOf } from './api';
 
 /** Nothing heard for this long, ms: the network is gone. */
@@ -20,14 +21,7 @@ export function uploadFile<T>(
       clearTimeout(silence);
       silence = setTimeout(() => request.abort(), SILENT_MS);
     };
-    const broken = () =>
-      reject(
-        new ApiError(
-          0,
-          'The server is out of reach',
-          'The upload broke off. Try again; what arrived twice is kept once.',
-        ),
-      );
+    const broken = () => reject(new ApiError(0, apiSaid.outOfReach, apiSaid.uploadBroken));
     request.open('POST', path);
     request.setRequestHeader('accept', 'application/json');
     request.setRequestHeader('content-type', file.type || 'application/octet-stream');

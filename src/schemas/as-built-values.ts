@@ -1,3 +1,4 @@
+import { partNames } from '../words/domain-as-built-parts';
 import type { NamedKind, PartKind } from '../domain/commissioning/as-built/parts';
 import type { AsBuilt, PartValues } from './api/as-built';
 
@@ -64,11 +65,11 @@ export function namedOptions(
   const offered = (types: readonly { id: string; name: string; archived: boolean }[]) =>
     types
       .filter((t) => !t.archived || keep.includes(t.id))
-      .map((t) => ({ id: t.id, name: t.archived ? `${t.name} (archived)` : t.name }));
+      .map((t) => ({ id: t.id, name: t.archived ? partNames.archived(t.name) : t.name }));
   switch (of) {
     case 'input':
       return parts.inverters.flatMap((v) =>
-        v.inputs.map((i) => ({ id: i.id, name: `${v.name}, input ${i.number}` })),
+        v.inputs.map((i) => ({ id: i.id, name: partNames.input(v.name, i.number) })),
       );
     case 'logger':
       return parts.loggers.map((l) => ({ id: l.id, name: l.serial }));
@@ -99,6 +100,9 @@ export const nameOf = (parts: Parts, of: NamedKind, id: string): string | undefi
 export function labelOf(parts: Parts, kind: PartKind, values: PartValues): string {
   if (kind === 'logger') return String(values.serial ?? '');
   if (kind === 'sensor')
-    return `${nameOf(parts, 'logger', String(values.logger ?? '')) ?? 'logger'}, sensor ${String(values.number ?? '')}`;
+    return partNames.sensor(
+      nameOf(parts, 'logger', String(values.logger ?? '')),
+      String(values.number ?? ''),
+    );
   return String(values.name ?? '');
 }

@@ -40,7 +40,7 @@ export function readHeader(family: EquipmentFamily, header: readonly string[]): 
         column: title,
         typed: title,
         why: typeFile.sameFieldTwice,
-        remedy: 'Delete one.',
+        remedy: typeFile.deleteOne,
       });
     else if (field?.kind === 'number' && unit !== null && !sameUnit(unit, field.unit))
       faults.push({

@@ -17,7 +17,7 @@ export interface NumberRange {
  */
 export function typedNumber(text: string, name: string, range: NumberRange): TypedNumber {
   const { min, max, whole = false, unit = '' } = range;
-  const span = `from ${written(min)} to ${written(max)}${unit ? ` ${unit}` : ''}`;
+  const span = typedNumbers.span(written(min), written(max), unit);
   const bare = text
     .replace(/[\s\u00a0\u202f]/g, '')
     .replace(/[−–]/g, '-')

@@ -103,3 +103,11 @@ export const partFieldTexts = {
     homeRunLeavesArray: { label: 'The home run leaves the array boundary' },
   },
 };
+
+/** How parts are named that carry a number of their whole. */
+export const partNames = {
+  input: (inverter: string, number: number) => `${inverter}, input ${number}`,
+  /** `logger` undefined: one that is gone. */
+  sensor: (logger: string | undefined, number: string) => `${logger ?? 'logger'}, sensor ${number}`,
+  archived: (name: string) => `${name} (archived)`,
+};

@@ -135,6 +135,9 @@ export const typePage = {
 };
 
 export const equipmentFit = {
+  roles: { exact: 'met exactly', fitted: 'fitted', follows: 'follows' },
+  /** What stands out, in the words of the table. */
+  remark: (remark: string) => remark.replace('gammaPmp', 'pmp per K').replace('betaVoc', 'voc per K'),
   oneModuleCanHave: 'One module can have all of these values: the curve meets the sheet.',
   theCurveMeetsThe: 'The curve meets the points of the sheet, but what follows from it differs:',
   theCurveComesClose:

@@ -8,6 +8,7 @@ export const typeEntry = {
 };
 
 export const typedNumbers = {
+  span: (min: string, max: string, unit: string) => `from ${min} to ${max}${unit ? ` ${unit}` : ''}`,
   typeNumber: (name: string, span: string) => `${name}: type a number ${span}.`,
   twoMarks: (name: string, text: string) =>
     `${name}: "${text}" has two marks. Type it with one comma or point, before the decimals.`,
@@ -21,6 +22,7 @@ export const typedNumbers = {
 
 export const typeFile = {
   sameFieldTwice: 'Two columns are the same field.',
+  deleteOne: 'Delete one.',
   columnUnit: (unit: string) => `The column is in ${unit || 'no unit'}.`,
   convertColumn: (unit: string, header: string) =>
     `This field takes ${unit}: convert the column, and call it "${header}".`,

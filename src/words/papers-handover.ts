@@ -233,3 +233,12 @@ export const papersHandoverSections = {
   positionAndSerial: 'Position and serial',
   modulesTypes: (types: string) => `Modules: ${types}.`,
 };
+
+/** What every paper says, whatever it is of. */
+export const paperWords = {
+  notEntered: 'not entered',
+  noneRecorded: 'none recorded',
+  page: (page: number, pages: number) => `Page ${page} of ${pages}`,
+  /** For signs that the typefaces lack. */
+  signs: { '→': 'to', '≤': 'at most', '≥': 'at least', '≈': 'about', '✓': 'yes' },
+};

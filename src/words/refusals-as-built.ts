@@ -95,6 +95,8 @@ export const equipmentImportRefusals = {
 };
 
 export const equipmentSaveRefusals = {
+  /** What stands in a field by now; empty: nothing. */
+  standsNow: (value: string) => `now ${value || 'empty'}`,
   nameTaken: (name: string, archived: boolean) =>
     archived
       ? `Name: "${name}" is there already, archived. Choose another name, or restore that one.`
@@ -108,6 +110,11 @@ export const equipmentSaveRefusals = {
 };
 
 export const handoverTestWords = {
+  instrument: 'Instrument',
+  limitsHeld: 'Limits',
+  instrumentIs: (name: string, serial: string, category: string, volts: string, calibratedOn: string) =>
+    `${name}, serial ${serial}, ${category} ${volts} V, calibrated ${calibratedOn}`,
+  slowest: (from: string, to: string) => `${from} to ${to} s`,
   operatedBy: 'Operated by, on site',
   lightAndWeather: 'Light and weather',
   nothingMeasured: 'none: nothing was measured by instrument',
@@ -129,8 +136,15 @@ export const importRefusals = {
 };
 
 export const placeHeardRefusals = {
-  oneSlot: 'one slot',
-  twoSlots: 'two slots',
+  slots: {
+    place: 'A place changes one slot.',
+    replace: 'A replace changes one slot.',
+    swap: 'A swap changes two slots.',
+    move: 'A move changes two slots.',
+  },
+  /** A person's reason, and what they saw. */
+  reasonAndSeen: (reason: string, seen: string) =>
+    `${reason.replace(/[.\s]*$/, '.')} Seen on the roof: ${seen}`,
   slotTaken: 'There is a unit in this slot. Replace it, or choose an empty slot.',
   giveOldSerial: 'Give the serial of the unit that takes the place of the old one.',
   chooseTwo: 'Choose two different slots.',
@@ -142,17 +156,20 @@ export const placeUnitsRefusals = {
   changedBy: (person: string) => ` ${person} changed it.`,
   timeAhead: (at: string) => `The time ${at} has not come yet. Set the clock of the phone, then try again.`,
   timeNotCome: 'This time has not come yet.',
-  nothingChanged: (first: string, more: string) => `Nothing was changed. ${first}${more}`,
+  nothingChanged: (first: string, more: number) =>
+    `Nothing was changed. ${first}${more > 0 ? ` And ${more} more.` : ''}`,
   sayWhy: 'Say why: a unit that was placed leaves its slot, or the site is operating.',
   sayWhyShort: 'Say why, in a few words. It stays in the history.',
 };
 
 export const recordCheckRefusals = {
+  checkOf: (check: string, string: string) => `“${check}” of ${string}`,
   stringHere: 'string at this site',
   sayWhy: 'Say why the check does not apply here.',
 };
 
 export const recordReadingRefusals = {
+  readingOf: (kind: string, string: string) => `${kind} of ${string}`,
   stringHere: 'string at this site',
   noSlots: (string: string) =>
     `${string} has no slots on the as-built: what a reading means can’t be told. Enter its slots first.`,

@@ -16,6 +16,10 @@ export const caseEvidenceWords = {
 };
 
 export const caseWords = {
+  reported: (line: string) => `Reported: ${line}`,
+  /** How a case's title begins. */
+  ofString: (string: string) => `String ${string}: `,
+  ofPosition: (string: string, position: number) => `String ${string}, position ${position}: `,
   couldAlsoBe: (alternatives: string) => `\nIt could also be: ${alternatives}.`,
 };
 
@@ -77,6 +81,8 @@ export const openCaseRefusals = {
 };
 
 export const plannedWorkRefusals = {
+  takenBack: (reason: string) => `taken back: ${reason}`,
+  endedEarly: (reason: string) => `ended early: ${reason}`,
   giveDateAndTime: 'Give a date and a time.',
   endAfterBeginning: 'The end must come after the beginning.',
   overAlready: 'This is over already. Planned works are entered before they end.',
@@ -130,6 +136,9 @@ export const testSignRefusals = {
 };
 
 export const testWriteRefusals = {
+  /** `startedBy` null: not known. */
+  underWay: (zone: string, startedBy: string | null) =>
+    `A test of ${zone} is under way already${startedBy === null ? '' : `: ${startedBy} started it`}. Go on with that one, or end it with a reason first.`,
   test: 'shutdown test',
   signedStays: 'This test is signed and stays as it is. Start a new one that supersedes it.',
   ended: (person: string, reason: string) => `This test was ended by ${person}: ${reason}. Start a new one.`,

@@ -44,6 +44,9 @@ export const explanationWords = {
 };
 
 export const historyWords = {
+  noneAlike: (plane: string) => `No other string on the ${plane} is of its kind: compared with the model.`,
+  noneAlikeNoSensor: (plane: string) =>
+    `No other string on the ${plane} is of its kind: compared with the model, which needs an irradiance sensor in the plane for this.`,
   atSharedInput: (strings: number, quantity: string) =>
     `Measured at the input, which ${strings} strings share: their common ${quantity === 'voltage' ? 'voltage' : quantity === 'current' ? 'sum of currents' : 'sum of power'}.`,
   others: (plane: string) => `other strings on the ${plane}`,

@@ -10,6 +10,10 @@ export const loggerTokenRefusals = {
 };
 
 export const myAccountWords = {
+  hello: (name: string) => `Hello ${name}`,
+  someBrowser: 'A browser',
+  browserOn: (browser: string, system: string) => `${browser} on ${system}`,
+  beginAgain: 'Begin again: there is no secret that waits for its code.',
   unknownDevice: 'An unknown device',
   wrongPassword: 'This is not your password. Nothing was changed.',
   wrongPasswordShort: 'This is not your password.',
@@ -34,6 +38,8 @@ export const noticeChoiceRefusals = {
 };
 
 export const invitationWords = {
+  hello: (name: string) => `Hello ${name}`,
+  someManager: 'A manager',
   siteNotYours: 'One of the sites is not among yours. Reload the page and choose again.',
   oneNotYours: 'One of them is not among yours.',
   chooseCustomerSites: 'Choose the sites that this customer will see.',

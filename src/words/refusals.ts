@@ -155,3 +155,10 @@ export const liveUpgradeRefusals = {
 export const ingestRefusals = {
   noReadingsHere: 'This process takes no readings.',
 };
+
+export const doorRefusals = {
+  otherSite: 'The request came from another site.',
+  onlyRead: 'A shared page is only read.',
+  notReachable: 'Not reachable just now',
+  databaseAway: 'The database does not answer, so Wakeline cannot tell who you are. Try again in a minute.',
+};

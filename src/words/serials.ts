@@ -12,6 +12,8 @@ export const camera = {
 };
 
 export const clashList = {
+  place: (string: string | undefined, position: number) =>
+    `${string ?? 'a string that is gone'}, position ${position}`,
   atWasNotKept: (serial: null | string, place: string) => `${serial ?? 'Empty'} at ${place} was not kept.`,
   whyYoursIsRight: 'Why yours is right',
   putThere: (serial: null | string) => `Put ${serial ?? 'it'} there`,

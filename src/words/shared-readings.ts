@@ -15,6 +15,8 @@ export const answerSheet = {
 };
 
 export const meterPanel = {
+  nextPlace: (place: string) => `Next: ${place}`,
+  done: 'Done',
   kindOfReading: 'Kind of reading',
   whatIsCommanded: 'What is commanded',
   keepAlive: 'Keep-alive',
@@ -81,6 +83,8 @@ export const sharedReadingsSheets = {
 };
 
 export const sharedReadingsWords = {
+  spokenPercent: (percent: string) => percent.replace('\u00a0%', ' per cent'),
+  spokenMinus: (figure: string) => figure.replace('−', 'minus '),
   shutdownOnly: 'Shutdown-only',
   monitored: 'Monitored',
   optimizing: 'Optimizing',

@@ -106,6 +106,8 @@ export const planStep = {
 };
 
 export const readingEntry = {
+  save: 'Save',
+  next: 'Next',
   to: '+ to −',
   toEarth: '+ to earth',
   toEarth2: '− to earth',
@@ -160,6 +162,7 @@ export const roundDrawing = {
 };
 
 export const roundStep = {
+  operated: 'operated',
   takenOff: 'taken off',
   roundOf: (index: number, rounds: number, facts: string) => `Round ${index + 1} of ${rounds}: ${facts}`,
   personIsolatesTheSupply: (what: string, map: string) =>
@@ -242,12 +245,13 @@ export const shutdownTestPlanForm = {
 };
 
 export const shutdownTestRound = {
+  transmitter: (name: undefined | string) => name ?? 'transmitter',
   invertersInputWhichIts: 'inverter’s input, which its capacitors hold up',
   atTheHomeRun: 'at the home run',
   sumOfWhatIts: 'sum of what its units report',
   nothingReported: 'nothing reported',
   wholeZone: (initiator: string) => `${initiator}, whole zone`,
-  offAlone: (find: undefined | string) => `${find ?? 'transmitter'} off alone`,
+  offAlone: (transmitter: string) => `${transmitter} off alone`,
 };
 
 export const shutdownTestWords = {
@@ -276,8 +280,8 @@ export const shutdownTestWords = {
   goOnWithThe: 'Go on with the next round, repeat this one, or look at the verdict.',
   didNotShutDown: (live: string) => `${live} did not shut down`,
   treatAsLiveRelease: 'Treat as live. Release, end the round, and find the cause before anybody works there.',
-  watchingWaitingForPerson: (zone: string, transmitter: null | string, initiator: string, replace: string) =>
-    `Watching ${zone}: waiting for a person to operate ${transmitter === null ? initiator : replace}`,
+  watchingWaitingForPerson: (zone: string, operated: string) =>
+    `Watching ${zone}: waiting for a person to operate ${operated}`,
   readToOfEach: 'Read + to − of each home run first: only a string that was live can be shown dead.',
   wasOperatedReadThe: (transmitter: null | string, initiator: string, name: string) =>
     `${transmitter === null ? initiator : name} was operated: read the home runs`,

@@ -144,7 +144,7 @@ export function MeterPanel({
       {pad && (
         <NumberPad
           onKey={key}
-          doneWords={then && text !== '' ? `Next: ${PLACE_LABELS[then]}` : 'Done'}
+          doneWords={then && text !== '' ? meterPanel.nextPlace(PLACE_LABELS[then]) : meterPanel.done}
           onDone={() => (then && text !== '' ? choose({ at: then }) : setPad(false))}
         />
       )}

@@ -190,11 +190,13 @@ export function cautionParts(caution: string): { strong: string; rest: string } 
 
 /** What is read aloud: the answer first, the cautions always. */
 export function aloud(answer: Interpretation, question: ReadingQuestion): string {
-  const spokenVolts = sharedReadingsWords.replaceVolts(number(question.voltageV, 1).replace('−', 'minus '));
+  const spokenVolts = sharedReadingsWords.replaceVolts(
+    sharedReadingsWords.spokenMinus(number(question.voltageV, 1)),
+  );
   const ranked = answer.likely
     .filter((h) => h.kind !== 'unexplained')
     .slice(0, 2)
-    .map((h) => `${h.words}: ${chance(h.probability).replace('\u00a0%', ' per cent')}.`);
+    .map((h) => `${h.words}: ${sharedReadingsWords.spokenPercent(chance(h.probability))}.`);
   return [
     spokenVolts,
     `${outcomeWords(answer)}.`,

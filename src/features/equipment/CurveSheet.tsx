@@ -15,7 +15,7 @@ import { ModuleCurve } from '../../drawings/ModuleCurve';
 import { irradiance, percent, power, celsius } from '../../drawings/numbers';
 import { CURVE_KEYS, curveEntry, curveMissing, type FormReading } from './form';
 import { fitOf, type FitLine, type ModuleFit } from './fit';
-import { curveSheet } from '../../words/equipment';
+import { curveSheet, equipmentFit } from '../../words/equipment';
 
 const SWEEPS = [
   { value: 'light', label: curveSheet.lessLight },
@@ -43,7 +43,7 @@ const isMain = (line: ModuleLine) => line.poaGlobal === 1000 && line.temperature
 
 /** What stands out: far off what the fit can forgive. */
 const standsOut = (line: FitLine): boolean =>
-  Math.abs(line.off) > (line.label.endsWith('per K') ? (line.role === 'follows' ? 0.15 : 0.05) : 0.005);
+  Math.abs(line.off) > (line.perKelvin ? (line.role === 'follows' ? 0.15 : 0.05) : 0.005);
 
 /** The curve that a datasheet gives, drawn while it is typed, and how far it is from each printed figure. */
 export function CurveSheet({ reading }: { reading: FormReading }) {
@@ -143,7 +143,7 @@ export function CurveSheet({ reading }: { reading: FormReading }) {
             key: 'role',
             label: curveSheet.how,
             from: 'sm',
-            cell: (line) => <span className="text-ink-2">{line.role}</span>,
+            cell: (line) => <span className="text-ink-2">{equipmentFit.roles[line.role]}</span>,
           },
         ]}
       />

@@ -12,7 +12,9 @@ export interface FitLine {
   /** (fitted − printed)/printed */
   off: number;
   /** Whether the fit was asked to meet it, or the figure only follows. */
-  role: 'met exactly' | 'fitted' | 'follows';
+  role: 'exact' | 'fitted' | 'follows';
+  /** Whether it is a coefficient of temperature: those forgive more. */
+  perKelvin: boolean;
 }
 export interface ModuleFit {
   sheet: ModuleSheet;
@@ -51,13 +53,9 @@ export function fitOf(entry: Entry): ModuleFit {
     fitted: `${number(printed + off * Math.abs(printed), digits)} ${unit}`,
     off,
     role,
+    perKelvin: unit === '%',
   });
-  const remarks = fit.remarks.map((r) =>
-    r
-      .replace('gammaPmp', 'pmp per K')
-      .replace('betaVoc', 'voc per K')
-      .replace(/(^| )-(?=\d)/g, '$1−'),
-  );
+  const remarks = fit.remarks.map((r) => equipmentFit.remark(r).replace(/(^| )-(?=\d)/g, '$1−'));
   const verdict = fit.quality === 'good' && remarks.length > 0 ? 'remarked' : fit.quality;
   return {
     sheet,
@@ -66,8 +64,8 @@ export function fitOf(entry: Entry): ModuleFit {
     remarks,
     words: WORDS[verdict],
     lines: [
-      line('voc', sheet.vocRef, fit.voc, 'met exactly', 'V', 2),
-      line('isc', sheet.iscRef, fit.isc, 'met exactly', 'A', 2),
+      line('voc', sheet.vocRef, fit.voc, 'exact', 'V', 2),
+      line('isc', sheet.iscRef, fit.isc, 'exact', 'A', 2),
       line('vmp', sheet.vmpRef, fit.vmp, 'fitted', 'V', 2),
       line('imp', sheet.impRef, fit.imp, 'fitted', 'A', 2),
       line('pmp', sheet.vmpRef * sheet.impRef, fit.pmp, 'follows', 'W', 1),

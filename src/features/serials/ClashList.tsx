@@ -19,7 +19,7 @@ export function ClashList({ clashes, strings, onInsist, onDrop }: Props) {
         <Clash
           key={entry.key}
           entry={entry}
-          place={`${strings.find((s) => s.id === entry.string)?.name ?? 'a string that is gone'}, position ${entry.position}`}
+          place={clashList.place(strings.find((s) => s.id === entry.string)?.name, entry.position)}
           onInsist={onInsist}
           onDrop={onDrop}
         />

@@ -195,7 +195,7 @@ export function ReadingEntry({ string, round, moment, timeLimitS, clockS, onSave
       <NumberPad
         onKey={(k) => typed(pressed(text[place], k))}
         onDone={next}
-        doneWords={place === 'negativeToEarthV' ? 'Save' : 'Next'}
+        doneWords={place === 'negativeToEarthV' ? readingEntry.save : readingEntry.next}
       />
       {first && (
         <p role="alert" className="font-medium text-rust-ink">

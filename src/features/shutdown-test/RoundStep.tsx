@@ -10,7 +10,15 @@ import { clockSeconds } from '../../drawings/times';
 import { ReadingEntry } from './ReadingEntry';
 import { RoundDrawing } from './RoundDrawing';
 import { StringRows } from './StringRows';
-import { commandedAtS, returnOf, roundName, stringsConcerned, stringsOfRound, type StringNow } from './round';
+import {
+  commandedAtS,
+  returnOf,
+  operatedName,
+  roundName,
+  stringsConcerned,
+  stringsOfRound,
+  type StringNow,
+} from './round';
 import type { TestInHand } from './use-test';
 import { roundStep } from '../../words/shutdown-test';
 
@@ -48,11 +56,8 @@ export function RoundStep({ test, index, mayWrite, onEnded }: Props) {
     [originS, serverNow],
   );
   const released = round.released !== null || Boolean(seen?.release);
-  const what =
-    round.transmitter === null
-      ? facts.initiator.name
-      : roundName(facts, round.transmitter).replace(' off alone', '');
-  const verb = round.transmitter === null ? 'operated' : roundStep.takenOff;
+  const what = operatedName(facts, round.transmitter);
+  const verb = round.transmitter === null ? roundStep.operated : roundStep.takenOff;
   const back = returnOf(seen);
   if (round.watchStarted === null)
     return (

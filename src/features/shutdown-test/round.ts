@@ -169,9 +169,15 @@ export function returnOf(seen: RoundEvidence | undefined): { back: number; held:
 }
 
 /** What is shut down in a round, in words: the zone by its initiator, or one transmitter. */
+/** The transmitter of a round, by its name. */
+const transmitterName = (facts: TestFacts, transmitter: string): string =>
+  shutdownTestRound.transmitter(facts.transmitters.find((t) => t.id === transmitter)?.name);
+/** What a person operates in a round: the initiator, or the one transmitter. */
+export const operatedName = (facts: TestFacts, transmitter: string | null): string =>
+  transmitter === null ? facts.initiator.name : transmitterName(facts, transmitter);
 export function roundName(facts: TestFacts, transmitter: string | null): string {
   if (transmitter === null) return shutdownTestRound.wholeZone(facts.initiator.name);
-  return shutdownTestRound.offAlone(facts.transmitters.find((t) => t.id === transmitter)?.name);
+  return shutdownTestRound.offAlone(transmitterName(facts, transmitter));
 }
 /** Strings that a round is to shut down: all by the initiator, else those that hear this transmitter alone. */
 export const stringsConcerned = (

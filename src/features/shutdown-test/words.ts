@@ -1,6 +1,6 @@
 import { openRound, type TestRecord } from '../../domain/commissioning/shutdown-test-record';
 import type { ShutdownTestPage } from '../../schemas/api/shutdown-test';
-import { roundName } from './round';
+import { operatedName, roundName } from './round';
 import { shutdownTestWords } from '../../words/shutdown-test';
 
 export interface StepWords {
@@ -73,12 +73,7 @@ export function stepWords(
     };
   if (!round.operated)
     return {
-      heading: shutdownTestWords.watchingWaitingForPerson(
-        zone,
-        round.transmitter,
-        facts.initiator.name,
-        name.replace(' off alone', ''),
-      ),
+      heading: shutdownTestWords.watchingWaitingForPerson(zone, operatedName(facts, round.transmitter)),
       sentence: shutdownTestWords.readToOfEach,
     };
   if (!round.released)

@@ -133,7 +133,7 @@ async function draftOfString(
     site: string.site,
     origin: 'string',
     title:
-      position === undefined ? `String ${string.name}: ` : `String ${string.name}, position ${position}: `,
+      position === undefined ? caseWords.ofString(string.name) : caseWords.ofPosition(string.name, position),
     chosen: [ref],
     parts: position === undefined ? [] : [{ string: ref, position }],
   };

@@ -127,7 +127,7 @@ function overtaken(family: EquipmentFamily, now: CatalogueType, typed: EntryInpu
     .filter((f) => typedValue(f, now.item.entry[f.key]) !== (typed[f.key] ?? '').trim())
     .map((f) => ({
       field: f.key,
-      message: `now ${typedValue(f, now.item.entry[f.key]) || 'empty'}`,
+      message: equipmentSaveRefusals.standsNow(typedValue(f, now.item.entry[f.key])),
     }));
   return new AppError('conflict', {
     message: equipmentSaveRefusals.changedMeanwhile(now.changedBy ?? ''),

@@ -30,13 +30,19 @@ export async function packTests(tx: Tx, data: PackData): Promise<PackTest[]> {
           plan ? [plan.light, plan.weather].filter(Boolean).join(', ') : '',
         ],
         [
-          'Instrument',
+          handoverTestWords.instrument,
           instrument
-            ? `${instrument.name}, serial ${instrument.serial}, ${instrument.category} ${number(instrument.ratedV)} V, calibrated ${instrument.calibratedOn}`
+            ? handoverTestWords.instrumentIs(
+                instrument.name,
+                instrument.serial,
+                instrument.category,
+                number(instrument.ratedV),
+                instrument.calibratedOn,
+              )
             : handoverTestWords.nothingMeasured,
         ],
         [
-          'Limits',
+          handoverTestWords.limitsHeld,
           handoverTestWords.limits(
             number(record.verdict.limits.outsideV),
             number(record.verdict.limits.insideV),
@@ -54,7 +60,7 @@ export async function packTests(tx: Tx, data: PackData): Promise<PackTest[]> {
           result: s.result,
           words: s.live ? `${s.words} ${s.live}` : s.words,
           highestV: s.highestV,
-          slowest: slowest ? `${number(slowest[0])} to ${number(slowest[1])} s` : '',
+          slowest: slowest ? handoverTestWords.slowest(number(slowest[0]), number(slowest[1])) : '',
         };
       }),
     });

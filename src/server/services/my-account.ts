@@ -38,7 +38,7 @@ export function deviceWords(agent: string | null): string {
       ['OPR/', 'Opera'],
       ['Chrome/', 'Chrome'],
       ['Safari/', 'Safari'],
-    ].find(([mark]) => agent.includes(mark ?? ''))?.[1] ?? 'A browser';
+    ].find(([mark]) => agent.includes(mark ?? ''))?.[1] ?? myAccountWords.someBrowser;
   const system =
     [
       ['Android', 'Android'],
@@ -48,7 +48,7 @@ export function deviceWords(agent: string | null): string {
       ['Mac OS X', 'macOS'],
       ['Linux', 'Linux'],
     ].find(([mark]) => agent.includes(mark ?? ''))?.[1] ?? '';
-  return system ? `${browser} on ${system}` : browser;
+  return system ? myAccountWords.browserOn(browser, system) : browser;
 }
 
 /** Sessions are named by a part of the hash that the table has: enough to end one, no way to become one. */
@@ -160,7 +160,7 @@ export async function askForEmail(
       expiresAt: new Date(at.getTime() + EMAIL_HOURS * HOUR_MS),
     });
     const { text, html } = letter({
-      greeting: `Hello ${caller.viewer.name}`,
+      greeting: myAccountWords.hello(caller.viewer.name),
       paragraphs: [myAccountWords.askedForAddress, myAccountWords.linkConfirms(EMAIL_HOURS)],
       action: { words: myAccountWords.useAddress, href: `${publicUrl()}${paths.confirmEmail(token)}` },
       footer: myAccountWords.leaveLetter,
@@ -209,7 +209,7 @@ export async function confirmSecondFactor(
   await takeCodeTry(caller.actor.personId);
   const factor = found(await secondFactorOf(tx, caller.actor.personId), 'person');
   if (!factor.secret || factor.confirmedAt)
-    throw new AppError('conflict', { message: 'Begin again: there is no secret that waits for its code.' });
+    throw new AppError('conflict', { message: myAccountWords.beginAgain });
   const step = stepOfCode(factor.secret, code, factor.usedStep, at);
   if (step === null)
     throw new AppError('invalid', {

@@ -115,9 +115,9 @@ export async function invite(
     at,
     expiresAt: new Date(at.getTime() + INVITATION_DAYS * DAY_MS),
   });
-  const from = (await findPersonName(tx, actor.personId)) ?? 'A manager';
+  const from = (await findPersonName(tx, actor.personId)) ?? invitationWords.someManager;
   const { text, html } = letter({
-    greeting: `Hello ${body.name}`,
+    greeting: invitationWords.hello(body.name),
     paragraphs: [invitationWords.invites(from), invitationWords.linkWorksOnce(INVITATION_DAYS)],
     action: { words: invitationWords.accept, href: `${publicUrl()}${paths.invitation(token)}` },
     footer: invitationWords.notExpected,

@@ -14,11 +14,7 @@ function check(body: PlaceBody): void {
     throw new AppError('invalid', { message, fields: [{ field, message }] });
   };
   const { kind, slots } = body;
-  if (slots.length !== SLOTS[kind])
-    refuse(
-      'slots',
-      `A ${kind} changes ${SLOTS[kind] === 1 ? placeHeardRefusals.oneSlot : placeHeardRefusals.twoSlots}.`,
-    );
+  if (slots.length !== SLOTS[kind]) refuse('slots', placeHeardRefusals.slots[kind]);
   const [one, two] = slots;
   if (kind === 'place' && one?.expected !== null) refuse('slots.0.serial', placeHeardRefusals.slotTaken);
   if (kind === 'replace' && (one?.expected === null || one?.serial === null))
@@ -61,7 +57,7 @@ export async function placeHeard(
     })),
     {
       at,
-      reason: `${body.reason.replace(/[.\s]*$/, '.')} Seen on the roof: ${body.seen}`,
+      reason: placeHeardRefusals.reasonAndSeen(body.reason, body.seen),
       source: 'roll_call',
       move: body.kind === 'swap' || body.kind === 'move',
       address,

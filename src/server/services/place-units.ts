@@ -176,9 +176,8 @@ function refuse(plan: PlacementPlan, options: PlaceOptions, stage: string, nowMs
   if (plan.faults.length > 0) {
     const only = plan.faults.every((f) => CONFLICTS.includes(f.kind));
     const [first] = plan.faults;
-    const more = plan.faults.length > 1 ? ` And ${plan.faults.length - 1} more.` : '';
     throw new AppError(only ? 'conflict' : 'invalid', {
-      message: placeUnitsRefusals.nothingChanged(first?.message ?? '', more),
+      message: placeUnitsRefusals.nothingChanged(first?.message ?? '', plan.faults.length - 1),
       fields: plan.faults.map((f) => ({ field: `changes.${f.index}.${f.field}`, message: f.message })),
       // of which kind each is: what may be done about it follows from that
       current: plan.faults,

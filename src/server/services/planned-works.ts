@@ -99,7 +99,9 @@ export async function endWork(tx: Tx, by: By, ref: string, at: Date): Promise<vo
   await endPlannedWork(tx, ref, at, by.actor.personId);
   const detail = {
     work: ref,
-    reason: work.startsAt > at ? `taken back: ${work.reason}` : `ended early: ${work.reason}`,
+    reason: (work.startsAt > at ? plannedWorkRefusals.takenBack : plannedWorkRefusals.endedEarly)(
+      work.reason,
+    ),
     startsAt: work.startsAt.toISOString(),
     endsAt: at.toISOString(),
     person: by.person,

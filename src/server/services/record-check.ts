@@ -42,7 +42,7 @@ export async function recordCheck(
   const [current] = (await latestChecks(tx, site.id, string.id)).filter((c) => c.check === input.check);
   if ((current?.ref ?? null) !== input.supersedes)
     throw recordedMeanwhile(
-      `“${checkDefinition(input.check).name}” of ${string.name}`,
+      recordCheckRefusals.checkOf(checkDefinition(input.check).name, string.name),
       current ? checkOut(current) : null,
     );
   const made = await insertCheck(tx, {

@@ -47,7 +47,7 @@ export async function recordReading(
   );
   if ((current?.ref ?? null) !== input.supersedes)
     throw recordedMeanwhile(
-      `${KIND_WORDS[input.kind]} of ${string.name}`,
+      recordReadingRefusals.readingOf(KIND_WORDS[input.kind], string.name),
       current ? readingOut(current) : null,
     );
   const judged = await judgedReading(tx, site.id, string, input, readings);

@@ -5,16 +5,17 @@ import { found } from '../errors';
 import { reportedBy } from '../queries/cases';
 import { visibleSite } from '../queries/visible-site';
 import { openCase } from './open-case';
+import { caseWords } from '../../words/refusals-cases';
 
 const TITLE_WORDS = 80;
 
 /** The first line of what somebody wrote, as a title: cut between words. */
 export function titleOfReport(what: string): string {
   const line = what.trim().split('\n')[0]?.trim() ?? '';
-  if (line.length <= TITLE_WORDS) return `Reported: ${line}`;
+  if (line.length <= TITLE_WORDS) return caseWords.reported(line);
   const cut = line.slice(0, TITLE_WORDS);
   const blank = cut.lastIndexOf(' ');
-  return `Reported: ${blank > TITLE_WORDS / 2 ? cut.slice(0, blank) : cut}…`;
+  return caseWords.reported(`${blank > TITLE_WORDS / 2 ? cut.slice(0, blank) : cut}…`);
 }
 
 /**

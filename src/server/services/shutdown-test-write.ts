@@ -63,7 +63,7 @@ export async function startShutdownTest(
   if (ref === undefined) {
     const open = (await shutdownTestStanding(tx, site.id)).find((z) => z.zone.id === start.zone)?.draft;
     throw new AppError('conflict', {
-      message: `A test of ${zone.name} is under way already${open ? `: ${open.startedBy} started it` : ''}. Go on with that one, or end it with a reason first.`,
+      message: testWriteRefusals.underWay(zone.name, open ? open.startedBy : null),
       ...(open ? { fields: [{ field: 'open', message: open.ref }] } : {}),
     });
   }

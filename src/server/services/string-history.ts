@@ -194,7 +194,7 @@ function notesOf(
     );
   if (siblings.length === 0)
     notes.push(
-      `No other string on the ${planeWords(facts.planeName)} is of its kind: compared with the model${hasBand ? '' : ', which needs an irradiance sensor in the plane for this'}.`,
+      (hasBand ? historyWords.noneAlike : historyWords.noneAlikeNoSensor)(planeWords(facts.planeName)),
     );
   return notes;
 }

@@ -1,3 +1,4 @@
+import { paperWords } from '../../../words/papers-handover';
 import { readFileSync } from 'node:fs';
 import { createRequire } from 'node:module';
 import * as fontkit from 'fontkit';
@@ -36,11 +37,7 @@ function face(subset: Subset, weight: Weight): Face {
 
 /** What no subset has, in signs that one has. */
 const SAID_OTHERWISE: Record<string, string> = {
-  '→': 'to',
-  '≤': 'at most',
-  '≥': 'at least',
-  '≈': 'about',
-  '✓': 'yes',
+  ...paperWords.signs,
   '\u202f': '\u00a0',
   '\u2011': '-',
   Ω: 'Ω', // the ohm sign is the Greek letter

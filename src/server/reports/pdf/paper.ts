@@ -1,3 +1,4 @@
+import { paperWords } from '../../../words/papers-handover';
 import PDFDocument from 'pdfkit';
 import { PAPER } from '../../../drawings/paint';
 import { runsOf, type Run, type Weight } from './faces';
@@ -208,7 +209,7 @@ export class Paper {
   facts(pairs: readonly (readonly [string, string])[]): void {
     const name = 150;
     for (const [label, value] of pairs) {
-      const shown = value || 'not entered';
+      const shown = value || paperWords.notEntered;
       const height = Math.max(
         this.heightOf(label, name - 10, { size: 9.5 }),
         this.heightOf(shown, WIDTH - name, { size: 9.5 }),
@@ -230,7 +231,11 @@ export class Paper {
       .stroke();
   }
 
-  table(columns: readonly PaperColumn[], rows: readonly (readonly string[])[], none = 'none recorded'): void {
+  table(
+    columns: readonly PaperColumn[],
+    rows: readonly (readonly string[])[],
+    none = paperWords.noneRecorded,
+  ): void {
     if (rows.length === 0) {
       this.text(none, { colour: PAPER.ink2 });
       return;
@@ -322,7 +327,7 @@ export class Paper {
       const foot = PAGE.height - 44;
       this.rule(foot - 6);
       this.setAt(this.lines.foot, MARGIN.left, foot, WIDTH - 70, style);
-      this.setAt(`Page ${i + 1} of ${count}`, MARGIN.left + WIDTH - 70, foot, 70, {
+      this.setAt(paperWords.page(i + 1, count), MARGIN.left + WIDTH - 70, foot, 70, {
         ...style,
         align: 'right',
       });
