@@ -116,3 +116,9 @@ export const eventSaid = {
   handover: (person: string) => `Handover papers made${by(person)}`,
   plannedWork: (reason: string) => titled('Planned work', reason),
 };
+
+/** What an event keeps with it, for programs that read it. */
+export const keptWithEvents = {
+  unitsOfSilentGateway:
+    'Whether its units follow a shutdown can not be confirmed until they are heard again.',
+};

@@ -2,6 +2,7 @@ import type { SiteCondition } from '../../domain/causes/site';
 import type { Tx } from '../db/transaction';
 import { addSiteEvents, type CauseSiteFacts } from '../queries/causes-stored';
 import { gatewaysOf, markGateways } from '../queries/gateways';
+import { keptWithEvents } from '../../words/domain-verdicts-events';
 
 /**
  * Gateways that nobody is heard through while their units should speak, and those that are heard again: an event each,
@@ -53,7 +54,7 @@ export async function judgeGateways(
       detail: {
         gateway: g.name,
         units: g.units,
-        follows: 'Whether its units follow a shutdown can not be confirmed until they are heard again.',
+        follows: keptWithEvents.unitsOfSilentGateway,
       },
     })),
     ...back.map((g) => ({
