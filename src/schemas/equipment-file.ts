@@ -11,12 +11,12 @@ const plain = (text: string): string =>
   text
     .toLocaleLowerCase('en')
     .replace(/\(.*\)/g, '')
-    .replace(/[^a-z0-9]+/g, '');
+    .replace(/[^\p{L}\p{N}]+/gu, '');
 const unitIn = (header: string): string | null => /\(([^)]*)\)\s*$/.exec(header)?.[1]?.trim() ?? null;
 const sameUnit = (a: string, b: string): boolean =>
   a.replace(/\s|°/g, '').toLocaleLowerCase('en') === b.replace(/\s|°/g, '').toLocaleLowerCase('en');
 
-/** Columns that a download has and that no import needs. */
+/** Heads of columns that a download has and that no import needs; the same in every language, as those of fields are. */
 const OURS_ALONE = new Set(['archived', 'strings', 'sites']);
 
 export interface ReadHeader {
@@ -26,14 +26,16 @@ export interface ReadHeader {
   ignored: string[];
 }
 
-/** Which column is which field, by its label, its short name or the name in a download. */
+/** Which column is which field, by its head in a download, its label or its short name. */
 export function readHeader(family: EquipmentFamily, header: readonly string[]): ReadHeader {
   const fields: (Field | null)[] = [];
   const faults: ImportFault[] = [];
   const ignored: string[] = [];
   for (const title of header) {
     const name = plain(title);
-    const field = FIELDS[family].find((f) => [plain(f.label), plain(f.key), plain(f.column)].includes(name));
+    const field = FIELDS[family].find((f) =>
+      [f.head ?? f.label, f.label, f.key, f.column].some((known) => name !== '' && plain(known) === name),
+    );
     const unit = unitIn(title);
     if (field && fields.includes(field))
       faults.push({

@@ -151,12 +151,6 @@ export const deliveryHeads = {
   lastFailure: 'last failure',
 };
 
-export const equipmentHeads = {
-  archived: 'Archived',
-  strings: 'Strings',
-  sites: 'Sites',
-};
-
 /** What a cell says where a table holds yes or no. */
 export const csvCells = {
   yes: 'yes',

@@ -1,7 +1,7 @@
 import type { ImportColumn } from '../domain/commissioning/import/columns';
 import type { NameColumn } from '../domain/commissioning/import/table';
 
-/** Heads of our own columns: in files that we write, in sentences, and accepted in files that we read. */
+/** What our own columns are called in sentences; also accepted in files. Heads of files that we write stand beside the reader. */
 export const COLUMN_LABELS: Record<ImportColumn, string> = {
   string: 'string',
   position: 'position',

@@ -5,7 +5,11 @@ import { createElement, type ComponentProps } from 'react';
 import { renderToStaticMarkup } from 'react-dom/server';
 import { createServer, type ViteDevServer } from 'vite';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import type * as Columns from '../../src/domain/commissioning/import/columns';
+import type * as Fields from '../../src/domain/equipment/fields';
+import type * as Plausibility from '../../src/domain/equipment/plausibility';
 import type { AuditList as List } from '../../src/features/audit/AuditList';
+import type * as EquipmentFile from '../../src/schemas/equipment-file';
 import { language } from '../../src/server/language';
 import { CLOSE, OPEN, writePseudoLanguage } from '../support/pseudo-language';
 import { ROOT } from './sources';
@@ -79,6 +83,31 @@ describe('a second language', () => {
     expect(new AppError('forbidden').message).toBe(`${OPEN}Your role does not include this${CLOSE}`);
     const { LANGUAGE } = await load<{ LANGUAGE: string }>('src/words/language.ts');
     expect(LANGUAGE).toBe('qps');
+  });
+
+  it('leaves heads of files that are read back as they are, and reads its own names of columns too', async () => {
+    const { FIELDS } = await load<typeof Plausibility>('src/domain/equipment/plausibility.ts');
+    const { headerOf } = await load<typeof Fields>('src/domain/equipment/fields.ts');
+    const { readHeader } = await load<typeof EquipmentFile>('src/schemas/equipment-file.ts');
+    const fields = FIELDS.modules;
+    const heads = fields.map(headerOf);
+    expect(heads.join()).not.toContain(OPEN);
+    for (const written of [heads, fields.map((f) => f.label)])
+      expect(readHeader('modules', written)).toEqual({ fields, faults: [], ignored: [] });
+    const { COLUMN_HEADS, IMPORT_COLUMNS, matchColumns } = await load<typeof Columns>(
+      'src/domain/commissioning/import/columns.ts',
+    );
+    const { COLUMN_LABELS } = await load<{ COLUMN_LABELS: typeof COLUMN_HEADS }>(
+      'src/words/domain-import.ts',
+    );
+    expect(COLUMN_LABELS.serial).toContain(OPEN);
+    for (const of of [COLUMN_HEADS, COLUMN_LABELS]) {
+      const match = matchColumns(
+        IMPORT_COLUMNS.map((c) => of[c]),
+        [],
+      );
+      expect(IMPORT_COLUMNS.map((c) => match[c])).toEqual(IMPORT_COLUMNS.map((_, i) => i));
+    }
   });
 
   it('that lacks a file stops the build and names it', async () => {

@@ -21,6 +21,8 @@ interface Common extends Omit<FieldTexts, 'emptyMeans'> {
   key: string;
   /** Of the table's row. */
   column: string;
+  /** Of its column in a file, without the unit; see `heads.ts`. */
+  head?: string;
 }
 export interface TextField extends Common {
   kind: 'text';
@@ -68,9 +70,11 @@ export function asKept(field: NumberField, typed: number): number {
   return Number((typed * (field.scale ?? 1)).toPrecision(9));
 }
 
-/** The header of a field's column in a CSV file: its label, and its unit in brackets. */
-export const headerOf = (field: Field): string =>
-  field.kind === 'number' && field.unit ? `${field.label} (${field.unit})` : field.label;
+/** The header of a field's column in a CSV file: the same in every language, and its unit in brackets. */
+export function headerOf(field: Field): string {
+  const head = field.head ?? field.label;
+  return field.kind === 'number' && field.unit ? `${head} (${field.unit})` : head;
+}
 
 /** The number under a key; an entry that has none there is a fault of the program. */
 export function numberOf(entry: Entry, key: string): number {

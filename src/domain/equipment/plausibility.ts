@@ -3,16 +3,17 @@ import { CONNECTOR_DEFAULTS, CONNECTOR_FIELDS } from './connector-fields';
 import type { Conflict, Doubt } from './doubt';
 import type { EquipmentFamily } from './families';
 import { numberOf, textOf, type Entry, type Field } from './fields';
+import { withHeads } from './heads';
 import { INVERTER_DEFAULTS, INVERTER_FIELDS } from './inverter-type';
 import { MODULE_DEFAULTS, MODULE_FIELDS } from './module-fields';
 import { moduleConflicts, moduleDoubts } from './module-plausibility';
 import { UNIT_FIELDS, presetEntry } from './unit-fields';
 
 export const FIELDS: Record<EquipmentFamily, readonly Field[]> = {
-  modules: MODULE_FIELDS,
-  units: UNIT_FIELDS,
-  connectors: CONNECTOR_FIELDS,
-  inverters: INVERTER_FIELDS,
+  modules: withHeads('modules', MODULE_FIELDS),
+  units: withHeads('units', UNIT_FIELDS),
+  connectors: withHeads('connectors', CONNECTOR_FIELDS),
+  inverters: withHeads('inverters', INVERTER_FIELDS),
 };
 
 /** What a new entry of a family begins with. */

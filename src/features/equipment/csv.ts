@@ -3,7 +3,6 @@ import { FIELDS } from '../../domain/equipment/plausibility';
 import type { Catalogue, CatalogueItem } from '../../schemas/api/equipment';
 import { writtenValue } from '../../schemas/equipment-file';
 import { connectorNamesOf } from './list';
-import { equipmentHeads } from '../../words/csv-heads';
 
 interface CsvColumn {
   header: string;
@@ -23,8 +22,8 @@ export function csvColumns(catalogue: Catalogue): CsvColumn[] {
           : writtenValue(field, value, names);
       },
     })),
-    { header: equipmentHeads.archived, value: (item) => item.archivedAt?.slice(0, 10) ?? '' },
-    { header: equipmentHeads.strings, value: (item) => item.strings },
-    { header: equipmentHeads.sites, value: (item) => item.sites },
+    { header: 'Archived', value: (item) => item.archivedAt?.slice(0, 10) ?? '' },
+    { header: 'Strings', value: (item) => item.strings },
+    { header: 'Sites', value: (item) => item.sites },
   ];
 }

@@ -1,5 +1,4 @@
-import { IMPORT_COLUMNS, type ImportColumn } from '../../domain/commissioning/import/columns';
-import { COLUMN_LABELS } from '../../words/domain-import';
+import { COLUMN_HEADS, IMPORT_COLUMNS, type ImportColumn } from '../../domain/commissioning/import/columns';
 import type { AsBuilt, SlotBuilt, StringBuilt } from '../../schemas/api/as-built';
 import { nameOf } from '../../schemas/as-built-values';
 import { csvResponse, csvText, type Cell, type Column } from './csv';
@@ -35,7 +34,7 @@ function columnsOf(built: Omit<AsBuilt, 'at'>): Column<Row>[] {
     roofY: ({ slot }) => slot.roofY,
     roofPlace: ({ slot }) => slot.roofPlace,
   };
-  return IMPORT_COLUMNS.map((key) => ({ header: COLUMN_LABELS[key], value: values[key] }));
+  return IMPORT_COLUMNS.map((key) => ({ header: COLUMN_HEADS[key], value: values[key] }));
 }
 
 const rowsOf = (built: Omit<AsBuilt, 'at'>): Row[] =>

@@ -56,6 +56,27 @@ const SYNONYMS: Record<ImportColumn, readonly string[]> = {
   roofPlace: 'place on the roof|roof place|place|location|where|ort|lage|note|remark'.split('|'),
 };
 
+/**
+ * Heads of the files that we write. They are read back, so they are the same in every language: each installation reads what
+ * another has written.
+ */
+export const COLUMN_HEADS: Record<ImportColumn, string> = {
+  string: 'string',
+  position: 'position',
+  serial: 'serial',
+  unitType: 'unit type',
+  moduleType: 'module type',
+  plane: 'plane',
+  inverter: 'inverter',
+  input: 'input',
+  zone: 'zone',
+  logger: 'logger',
+  transmitters: 'transmitters',
+  roofX: 'roof x (m)',
+  roofY: 'roof y (m)',
+  roofPlace: 'place on the roof',
+};
+
 /** A header without case, accents, marks and double blanks. */
 export const bareHeader = (text: string): string =>
   text
@@ -67,10 +88,12 @@ export const bareHeader = (text: string): string =>
 
 const KNOWN = new Map<string, ImportColumn>();
 for (const column of IMPORT_COLUMNS)
-  for (const word of [COLUMN_LABELS[column], column, ...SYNONYMS[column]])
+  for (const word of [COLUMN_HEADS[column], COLUMN_LABELS[column], column, ...SYNONYMS[column]])
     if (!KNOWN.has(bareHeader(word))) KNOWN.set(bareHeader(word), column);
-/** The product's own labels win over other people's words. */
-const OWN = new Map(IMPORT_COLUMNS.map((c) => [bareHeader(COLUMN_LABELS[c]), c]));
+/** The product's own heads and labels win over other people's words, heads over labels. */
+const OWN = new Map(
+  [COLUMN_LABELS, COLUMN_HEADS].flatMap((of) => IMPORT_COLUMNS.map((c) => [bareHeader(of[c]), c] as const)),
+);
 
 /** For each of our columns the index in the file, or null. */
 export type ColumnMatch = Record<ImportColumn, number | null>;

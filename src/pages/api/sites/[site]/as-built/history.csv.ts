@@ -1,20 +1,29 @@
 import { changeText, historyTitle, sourceWords } from '../../../../../words/as-built-history-sentences';
 import { historyView } from '../../../../../schemas/api/as-built';
 import { siteParams } from '../../../../../schemas/api/site';
+import { found } from '../../../../../server/errors';
 import { endpoint } from '../../../../../server/http/endpoint';
-import { csvResponse } from '../../../../../server/reports/csv';
-import { historyPage } from '../../../../../server/services/as-built-history';
+import { historyItems } from '../../../../../server/queries/as-built-history';
+import { visibleSite } from '../../../../../server/queries/visible-site';
+import { csvPages, pageBy, ROWS_A_PAGE } from '../../../../../server/reports/csv-pages';
 import { asBuiltHistoryHeads } from '../../../../../words/csv-heads-site';
-
-/** More entries than a site gathers in decades. */
-const ALL = 100_000;
 
 export const GET = endpoint(
   { permission: 'telemetry.export', params: siteParams, query: historyView },
-  async ({ tx, actor, params, query }) => {
-    const page = await historyPage(tx, actor, params.site, { ...query, limit: ALL }, new Date());
-    return csvResponse(
-      `as-built-history-${page.site.name}`,
+  async (call) => {
+    const site = found(await visibleSite(call.tx, call.params.site), 'site');
+    return csvPages(
+      call,
+      `as-built-history-${site.name}`,
+      async (tx, before: number | undefined) =>
+        pageBy(
+          await historyItems(tx, site.id, {
+            ...call.query,
+            limit: ROWS_A_PAGE + 1,
+            ...(before !== undefined && { before }),
+          }),
+          (last) => last.id,
+        ),
       [
         { header: asBuiltHistoryHeads.atUtc, value: (i) => new Date(i.at) },
         { header: asBuiltHistoryHeads.person, value: (i) => i.person },
@@ -23,7 +32,6 @@ export const GET = endpoint(
         { header: asBuiltHistoryHeads.reason, value: (i) => i.reason },
         { header: asBuiltHistoryHeads.how, value: (i) => sourceWords(i.source) },
       ],
-      page.items,
     );
   },
 );
