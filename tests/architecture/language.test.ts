@@ -5,6 +5,7 @@ import { createElement, type ComponentProps } from 'react';
 import { renderToStaticMarkup } from 'react-dom/server';
 import { createServer, type ViteDevServer } from 'vite';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import type * as CheckPart from '../../src/domain/commissioning/as-built/check-part';
 import type * as Columns from '../../src/domain/commissioning/import/columns';
 import type * as Fields from '../../src/domain/equipment/fields';
 import type * as Plausibility from '../../src/domain/equipment/plausibility';
@@ -81,6 +82,14 @@ describe('a second language', () => {
     expect(counted(2, 'roof')).toContain('roof');
     const { AppError } = await load<{ AppError: new (kind: string) => Error }>('src/server/errors.ts');
     expect(new AppError('forbidden').message).toBe(`${OPEN}Your role does not include this${CLOSE}`);
+    const { checkPart } = await load<typeof CheckPart>('src/domain/commissioning/as-built/check-part.ts');
+    const faults = checkPart('plane', { name: '', surfaceTilt: 91 }, 'given').faults ?? [];
+    expect(faults).toHaveLength(2);
+    for (const { message } of faults) {
+      expect(message.startsWith(OPEN)).toBe(true);
+      // nothing of ours is joined to it
+      expect(message.endsWith(CLOSE)).toBe(true);
+    }
     const { LANGUAGE } = await load<{ LANGUAGE: string }>('src/words/language.ts');
     expect(LANGUAGE).toBe('qps');
   });
