@@ -1,6 +1,7 @@
 import type { Mode } from '../domain/causes/candidates';
 import type { CauseVerdict, PartKind } from '../domain/causes/site';
 import type { FindingEvidence } from '../domain/verdicts/memory';
+import { countAtStart } from '../drawings/numbers';
 import { counted } from './domain-counts';
 import { isOne } from './language';
 
@@ -105,6 +106,8 @@ export const causeHeadlines = {
     `All on ${named(kind, name)}: ${units(n)} ${does(verdict, n)}`,
   inputAtVoltage: (name: string, ofStrings: number) =>
     `${name} stays at voltage: ${strings(ofStrings)} may not shut down`,
+  /** Units that share nothing; begins the sentence. */
+  severalAlone: (n: number, verdict: CauseVerdict) => `${countAtStart(n)} units ${does(verdict, n)}`,
   wholeSite: (verdict: CauseVerdict, n: number) => `The whole site: ${units(n)} ${does(verdict, n)}`,
   canNotSay: (zone: string, n: number) =>
     `${units(n)} in ${named('zone', zone)} can not say whether they shut down`,

@@ -1,3 +1,6 @@
+import { counted } from './domain-counts';
+import { isOne } from './language';
+
 export const acceptGapRefusals = {
   settledMeanwhile:
     'This point has been settled or has changed meanwhile. Reload the page to see how it stands.',
@@ -9,12 +12,39 @@ export const asBuiltRequestRefusals = {
     `Inverter input: from this one on there are ${inputs} inputs, not ${count}. Choose an earlier one, or put them all on one.`,
 };
 
+/** What hangs on a part of a site and keeps it, counted. */
+export const hangingRecords = {
+  reading: (n: number) => counted(n, 'reported reading'),
+  input_reading: (n: number) => counted(n, 'reported reading of an input', 'reported readings of an input'),
+  command: (n: number) => counted(n, 'reported command'),
+  shutdown_test: (n: number) => counted(n, 'shutdown test'),
+  roster: (n: number) => counted(n, 'roster that it was given', 'rosters that it was given'),
+  unit_heard: (n: number) => counted(n, 'unit that it has heard', 'units that it has heard'),
+  connection: (n: number) => counted(n, 'connection'),
+  meter_reading: (n: number) => counted(n, 'meter reading'),
+  install_check: (n: number) => counted(n, 'install check'),
+  sign_off: (n: number) => counted(n, 'sign-off'),
+  file: (n: number) => counted(n, 'file'),
+  trace: (n: number) => counted(n, 'trace of a command', 'traces of a command'),
+  event: (n: number) => counted(n, 'event'),
+  day: (n: number) => counted(n, 'day of production', 'days of production'),
+};
+const named = (names: readonly string[], one: string, many: string): string =>
+  `${isOne(names.length) ? one : many} ${names.length <= 4 ? names.join(', ') : `${names.slice(0, 3).join(', ')} and ${names.length - 3} more`}`;
+/** What hangs on a part of a site and goes first, by name. */
+export const hangingParts = {
+  string: (names: readonly string[]) => named(names, 'string', 'strings'),
+  sensor: (names: readonly string[]) => named(names, 'sensor', 'sensors'),
+  zone: (names: readonly string[]) => named(names, 'zone', 'zones'),
+  transmitter: (names: readonly string[]) => named(names, 'transmitter', 'transmitters'),
+};
+
 export const asBuiltRefusals = {
   recordsHang: (table: string) =>
     `Records hang on this, or somebody changed it at this moment${table ? ` (${table})` : ''}. Reload the page and look again.`,
-  partStays: (part: string, records: string, one: boolean) =>
-    `${part} stays: ${records} ${one ? 'hangs' : 'hang'} on it. Rename it, or leave it as it is.`,
-  partsNamed: (what: string, count: number, names: string) => `${count === 1 ? what : `${what}s`} ${names}`,
+  /** @param one whether it is one record of one kind */
+  partStays: (part: string, records: readonly string[], one: boolean) =>
+    `${part} stays: ${records.join(', ')} ${one ? 'hangs' : 'hang'} on it. Rename it, or leave it as it is.`,
   partInUse: (part: string, users: readonly string[]) =>
     `${part} is in use by ${users.join(' and ')}. Change those first.`,
   siteNameTaken: 'Another site of yours has this name. Choose one that tells them apart.',

@@ -26,10 +26,6 @@ export const caseWords = {
 export const causeWords = {
   eachAlone: (strings: number, names: string) =>
     `Each stands alone in ${strings > 4 ? `${strings} strings` : names}: no part that they share explains them.`,
-  doNotShutDown: 'do not shut down',
-  areStuck: 'are stuck in shutdown',
-  haveNotShown: 'have not shown that they shut down',
-  areSilent: 'are silent',
 };
 
 export const changeCaseRefusals = {

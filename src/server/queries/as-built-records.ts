@@ -3,20 +3,36 @@ import type { Tx } from '../db/transaction';
 
 /** What hangs on a part of a site, so that it can't go without being missed. */
 
+export type HangingPart = 'string' | 'sensor' | 'zone' | 'transmitter';
+export type HangingRecord =
+  | 'reading'
+  | 'input_reading'
+  | 'command'
+  | 'shutdown_test'
+  | 'roster'
+  | 'unit_heard'
+  | 'connection'
+  | 'meter_reading'
+  | 'install_check'
+  | 'sign_off'
+  | 'file'
+  | 'trace'
+  | 'event'
+  | 'day';
 export interface Hanging {
   /** Other parts by name: they go or are changed first. */
-  parts: { what: string; names: string[] }[];
+  parts: { what: HangingPart; names: string[] }[];
   /** Records and telemetry, counted: they stay, and so does the part. */
-  records: { what: string; count: number }[];
+  records: { what: HangingRecord; count: number }[];
 }
 
-const names = (what: string, sql: string) => ({ what, sql });
-const count = (what: string, sql: string) => ({ what, sql });
+const names = (what: HangingPart, sql: string) => ({ what, sql });
+const count = (what: HangingRecord, sql: string) => ({ what, sql });
 
 /** `?` is the part's number. `parts` give names, `records` give a number each. */
 const HANGING: Record<
   Exclude<PartKind, 'site'>,
-  { parts: { what: string; sql: string }[]; records: { what: string; sql: string }[] }
+  { parts: { what: HangingPart; sql: string }[]; records: { what: HangingRecord; sql: string }[] }
 > = {
   plane: {
     parts: [
@@ -33,10 +49,10 @@ const HANGING: Record<
       ),
     ],
     records: [
-      count('reported reading', 'select 1 from inverter_frame where inverter_id = ? limit 1'),
-      count('reported reading', 'select 1 from inverter_state where inverter_id = ?'),
+      count('reading', 'select 1 from inverter_frame where inverter_id = ? limit 1'),
+      count('reading', 'select 1 from inverter_state where inverter_id = ?'),
       count(
-        'reported reading of an input',
+        'input_reading',
         'select 1 from input_state x join input i on i.id = x.input_id where i.inverter_id = ?',
       ),
     ],
@@ -51,8 +67,8 @@ const HANGING: Record<
       names('transmitter', 'select name from transmitter where zone_id = ?'),
     ],
     records: [
-      count('reported command', 'select 1 from command where zone_id = ?'),
-      count('shutdown test', 'select 1 from shutdown_test where zone_id = ?'),
+      count('command', 'select 1 from command where zone_id = ?'),
+      count('shutdown_test', 'select 1 from shutdown_test where zone_id = ?'),
     ],
   },
   transmitter: {
@@ -62,7 +78,7 @@ const HANGING: Record<
         'select s.name from transmitter_string t join string s on s.id = t.string_id where t.transmitter_id = ?',
       ),
     ],
-    records: [count('reported command', 'select 1 from command where transmitter_id = ?')],
+    records: [count('command', 'select 1 from command where transmitter_id = ?')],
   },
   logger: {
     parts: [
@@ -70,38 +86,38 @@ const HANGING: Record<
       names('sensor', 'select number::text as name from sensor where logger_id = ?'),
     ],
     records: [
-      count('roster that it was given', 'select 1 from roster_version where logger_id = ?'),
-      count('unit that it has heard', 'select 1 from heard where logger_id = ?'),
+      count('roster', 'select 1 from roster_version where logger_id = ?'),
+      count('unit_heard', 'select 1 from heard where logger_id = ?'),
       count('connection', 'select 1 from logger where id = ? and connected_at is not null'),
     ],
   },
   sensor: {
     parts: [],
     records: [
-      count('reported reading', 'select 1 from weather_state where sensor_id = ?'),
-      count('reported reading', 'select 1 from weather_frame where sensor_id = ? limit 1'),
+      count('reading', 'select 1 from weather_state where sensor_id = ?'),
+      count('reading', 'select 1 from weather_frame where sensor_id = ? limit 1'),
     ],
   },
   string: {
     parts: [],
     records: [
-      count('meter reading', 'select 1 from meter_reading where string_id = ?'),
-      count('install check', 'select 1 from install_check where string_id = ?'),
-      count('sign-off', 'select 1 from string_sign_off where string_id = ?'),
+      count('meter_reading', 'select 1 from meter_reading where string_id = ?'),
+      count('install_check', 'select 1 from install_check where string_id = ?'),
+      count('sign_off', 'select 1 from string_sign_off where string_id = ?'),
       count('file', 'select 1 from attachment where string_id = ?'),
       count(
-        'shutdown test',
+        'shutdown_test',
         `select 1 from string s join shutdown_test t on t.site_id = s.site_id
          where s.id = ? and t.detail::text like '%' || s.ref::text || '%'`,
       ),
-      count('trace of a command', 'select 1 from trace where string_id = ?'),
+      count('trace', 'select 1 from trace where string_id = ?'),
       count('event', 'select 1 from event where string_id = ?'),
       count(
-        'reported reading',
+        'reading',
         `select 1 from string s where s.id = ? and (exists (select from string_frame f where f.string_id = s.id)
            or exists (select from packed_frame p where p.string_id = s.id))`,
       ),
-      count('day of production', 'select 1 from string_day where string_id = ?'),
+      count('day', 'select 1 from string_day where string_id = ?'),
     ],
   },
 };

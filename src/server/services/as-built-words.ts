@@ -1,6 +1,6 @@
 import { AppError, type FieldFault } from '../errors';
 import type { Hanging } from '../queries/as-built-records';
-import { asBuiltRefusals } from '../../words/refusals-as-built';
+import { asBuiltRefusals, hangingParts, hangingRecords } from '../../words/refusals-as-built';
 
 /** What the database says of a change that it refuses, in words, at the field. */
 const CONSTRAINTS: Record<string, { key: string; message: string }> = {
@@ -65,26 +65,18 @@ export function refuseFaults(faults: readonly FieldFault[]): void {
     throw new AppError('invalid', { message: faults.map((f) => f.message).join(' '), fields: [...faults] });
 }
 
-const plural = (count: number, one: string): string => {
-  if (count === 1) return `1 ${one}`;
-  const [head = '', ...rest] = one.split(/ (?=that|of)/);
-  return `${count} ${[`${head}s`, ...rest].join(' ')}`;
-};
-const listed = (names: readonly string[]): string =>
-  names.length <= 4 ? names.join(', ') : `${names.slice(0, 3).join(', ')} and ${names.length - 3} more`;
-
 /** Why a part can't go, and what to do; null: it can. */
 export function hangingWords(part: string, { parts, records }: Hanging): string | null {
   if (records.length > 0)
     return asBuiltRefusals.partStays(
       part,
-      records.map((r) => plural(r.count, r.what)).join(', '),
+      records.map((r) => hangingRecords[r.what](r.count)),
       records.length === 1 && records[0]?.count === 1,
     );
   if (parts.length > 0)
     return asBuiltRefusals.partInUse(
       part,
-      parts.map((p) => asBuiltRefusals.partsNamed(p.what, p.names.length, listed(p.names))),
+      parts.map((p) => hangingParts[p.what](p.names)),
     );
   return null;
 }

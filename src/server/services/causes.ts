@@ -1,10 +1,11 @@
 import { causesOf } from '../../domain/causes/causes';
 import type { Cause, SiteCondition, SlotCondition } from '../../domain/causes/site';
 import { UNIT_STATES, VERDICTS } from '../../domain/verdicts/codes';
-import { countAtStart, listed } from '../../drawings/numbers';
+import { listed } from '../../drawings/numbers';
 import type { CauseNow } from '../../schemas/api/now';
 import type { Tx } from '../db/transaction';
 import { causeSites, type CauseSiteRow, type CauseStringRow } from '../queries/causes';
+import { causeHeadlines } from '../../words/domain-causes';
 import { causeWords } from '../../words/refusals-cases';
 
 const iso = (atS: number): string => new Date(atS * 1000).toISOString();
@@ -79,13 +80,6 @@ export function conditionOf(row: CauseSiteRow, at: Date): SiteCondition {
   };
 }
 
-const DO: Record<Cause['verdict'], string> = {
-  not_shutting_down: causeWords.doNotShutDown,
-  stuck: causeWords.areStuck,
-  unconfirmed: causeWords.haveNotShown,
-  silent: causeWords.areSilent,
-};
-
 /**
  * Units that no part explains become one entry of a site and verdict: a person goes there once. What belongs to a
  * shared part stays as it is.
@@ -110,7 +104,7 @@ export function together(causes: readonly Cause[]): Cause[] {
       key: `${verdict}:alone`,
       sinceS: Math.min(...singles.map((c) => c.sinceS)),
       sharedPart: null,
-      headline: `${countAtStart(singles.length)} units ${DO[verdict]}`,
+      headline: causeHeadlines.severalAlone(singles.length, verdict),
       evidence: causeWords.eachAlone(strings.length, listed(strings)),
       alternatives: [...new Set(singles.flatMap((c) => c.alternatives))],
       confidence: Math.min(...singles.map((c) => c.confidence)),
