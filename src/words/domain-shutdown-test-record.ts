@@ -38,7 +38,6 @@ export const testLacks = {
     `Take each transmitter off alone once: ${listed(names)} ${isOne(names.length) ? 'was' : 'were'} not shown so. A string that hears a neighbour's transmitter shows itself only then.`,
   readAtInverterEnd: (strings: readonly string[], timeLimitS: number) =>
     `Read + to −, + to earth and − to earth with a rated instrument at the inverter end of ${strings.length > 6 ? counted(strings.length, 'home run') : listed(strings)}: + to − before the command, all three within ${timeLimitS} s after it.`,
-  testInLight: 'Test again in light that powers the units: without it a dead string proves nothing.',
 };
 
 /** What a reader should know beside the results; rounds count from 1. */

@@ -1,3 +1,4 @@
+import { shutdownTestSaid } from '../../words/domain-shutdown-test';
 import { instrumentSaid, testLacks, testNotes } from '../../words/domain-shutdown-test-record';
 import type { TestResult } from './shutdown-test';
 import type { Instrument, RoundEvidence, TestedPart, TestReading, TestRecord } from './shutdown-test-record';
@@ -50,7 +51,7 @@ export function missing(
     .filter((s) => s.result === 'consistent' || s.result === 'not_witnessed')
     .map((s) => s.name);
   if (open.length > 0) list.push(testLacks.readAtInverterEnd(open, timeLimitS));
-  if (light === 'night' || light === 'snow') list.push(testLacks.testInLight);
+  if (light === 'night' || light === 'snow') list.push(shutdownTestSaid.testInLight);
   return list;
 }
 
