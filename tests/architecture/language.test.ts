@@ -6,9 +6,12 @@ import { renderToStaticMarkup } from 'react-dom/server';
 import { createServer, type ViteDevServer } from 'vite';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import type * as CheckPart from '../../src/domain/commissioning/as-built/check-part';
+import type * as Checklists from '../../src/domain/cases/checklists';
 import type * as Columns from '../../src/domain/commissioning/import/columns';
 import type * as Fields from '../../src/domain/equipment/fields';
 import type * as Plausibility from '../../src/domain/equipment/plausibility';
+import type * as Times from '../../src/domain/history-import/times';
+import type * as Advice from '../../src/domain/notices/advice';
 import type { AuditList as List } from '../../src/features/audit/AuditList';
 import type * as EquipmentFile from '../../src/schemas/equipment-file';
 import { language } from '../../src/server/language';
@@ -90,6 +93,17 @@ describe('a second language', () => {
       // nothing of ours is joined to it
       expect(message.endsWith(CLOSE)).toBe(true);
     }
+    // what the domain concludes: an instruction, a line of a checklist, a sentence with figures
+    const { adviceFor } = await load<typeof Advice>('src/domain/notices/advice.ts');
+    const { checklistOf } = await load<typeof Checklists>('src/domain/cases/checklists.ts');
+    const { readTime } = await load<typeof Times>('src/domain/history-import/times.ts');
+    const time = readTime('3/4/2026 10:00', null, 'UTC', null);
+    for (const said of [
+      adviceFor('stuck', null).today,
+      checklistOf('stuck')[0]?.check,
+      time.kind === 'fault' && time.message,
+    ])
+      expect(said).toMatch(new RegExp(`^${OPEN}.+${CLOSE}$`));
     const { LANGUAGE } = await load<{ LANGUAGE: string }>('src/words/language.ts');
     expect(LANGUAGE).toBe('qps');
   });
