@@ -1,5 +1,8 @@
 import { counted } from '../drawings/numbers';
 
+/** Whoever made a change; null: a person whose account is gone. */
+export const changedBy = (person: string | null): string => person ?? 'somebody who is gone';
+
 export const historyBoard = {
   everything: 'Everything',
   units: 'Units',

@@ -14,7 +14,7 @@ import { useViewInUrl } from '../../lib/view-in-url';
 import type { HistoryItem, HistoryPage, HistoryView, Stay } from '../../schemas/api/as-built';
 import { paths } from '../../schemas/paths';
 import { changedFields, historyTitle, sourceWords } from '../../words/as-built-history-sentences';
-import { historyBoard } from '../../words/as-built-history';
+import { changedBy, historyBoard } from '../../words/as-built-history';
 
 export const HISTORY_DEFAULTS: HistoryView = { find: '', kind: 'all', person: '', string: '' };
 const KINDS = [
@@ -76,7 +76,7 @@ export function HistoryBoard({ initial, view: initialView }: Props) {
         sentence={
           newest ? (
             <>
-              {historyBoard.filteredPersonAt(filtered, newest.person)}
+              {historyBoard.filteredPersonAt(filtered, changedBy(newest.person))}
               <SiteTime at={newest.at} now={initial.at} timeZone={site.timeZone} zone />
               {newest.reason ? <>: “{newest.reason}”</> : '.'}
             </>
@@ -172,7 +172,7 @@ function Entry({ item, page }: { item: HistoryItem; page: HistoryPage }) {
     <li className="grid gap-x-5 border-b border-rule-faint py-2.5 last:border-b-0 sm:grid-cols-[150px_minmax(0,1fr)]">
       <div className="text-sm text-ink-2">
         <SiteTime at={item.at} now={page.at} timeZone={page.site.timeZone} />
-        <span className="block">{item.person}</span>
+        <span className="block">{changedBy(item.person)}</span>
       </div>
       <div className="min-w-0">
         <p className="font-medium">

@@ -214,7 +214,8 @@ export const historyQuery = historyView.extend({
 export const historyItem = z.object({
   id: z.int(),
   at: time,
-  person: z.string(),
+  /** null: somebody who is gone. */
+  person: z.string().nullable(),
   action: z.string(),
   /** What was changed, in words. */
   of: z.string(),

@@ -61,7 +61,7 @@ export async function historyItems(tx: Tx, siteId: number, filter: HistoryFilter
     return {
       id,
       at: at.toISOString(),
-      person: person ?? 'somebody who is gone',
+      person,
       action: action.replace('as_built.', ''),
       of: typeof of === 'string' ? of : subject,
       before: before ?? {},

@@ -1,3 +1,4 @@
+import { changedBy } from '../../../../../words/as-built-history';
 import { changeText, historyTitle, sourceWords } from '../../../../../words/as-built-history-sentences';
 import { historyView } from '../../../../../schemas/api/as-built';
 import { siteParams } from '../../../../../schemas/api/site';
@@ -26,7 +27,7 @@ export const GET = endpoint(
         ),
       [
         { header: asBuiltHistoryHeads.atUtc, value: (i) => new Date(i.at) },
-        { header: asBuiltHistoryHeads.person, value: (i) => i.person },
+        { header: asBuiltHistoryHeads.person, value: (i) => changedBy(i.person) },
         { header: asBuiltHistoryHeads.what, value: (i) => historyTitle(i) },
         { header: asBuiltHistoryHeads.change, value: (i) => changeText(i) },
         { header: asBuiltHistoryHeads.reason, value: (i) => i.reason },
