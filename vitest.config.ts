@@ -8,6 +8,7 @@ const build = 'tests/setup/build.ts';
 
 export default defineConfig({
   test: {
+    experimental: { fsModuleCache: true }, // each project would make the same modules anew
     maxWorkers: 4, // of two cores: journeys mostly wait, for plants and for the server
     sequence: { sequencer: Order },
     restoreMocks: true,
@@ -65,7 +66,9 @@ export default defineConfig({
         test: {
           name: 'access',
           include: ['tests/access/**/*.test.ts', 'tests/attacks/**/*.test.ts'],
-          setupFiles: [noise],
+          isolate: false,
+          sequence: { setupFiles: 'list' },
+          setupFiles: [alone, noise],
           globalSetup: [database, build],
         },
       },
@@ -74,7 +77,9 @@ export default defineConfig({
         test: {
           name: 'e2e',
           include: ['tests/e2e/**/*.test.ts'],
-          setupFiles: [noise],
+          isolate: false,
+          sequence: { setupFiles: 'list' },
+          setupFiles: [alone, noise],
           globalSetup: [database, build],
           retry: 1, // a browser on a busy machine may miss its moment once, not twice
           testTimeout: 240_000,

@@ -60,8 +60,10 @@ describe('packages of others', () => {
   it('are pinned to a version, and the lock file holds that one', () => {
     const wanted = { ...manifest.dependencies, ...manifest.devDependencies };
     for (const [name, version] of Object.entries(wanted)) {
-      expect(version, name).toMatch(/^\d+\.\d+\.\d+(-[\w.]+)?$/);
-      expect(lock.packages[`node_modules/${name}`]?.version, name).toBe(version);
+      // a second version of a package stands beside the first under a name of ours
+      const pinned = version.replace(/^npm:[\w/@-]+@/, '');
+      expect(pinned, name).toMatch(/^\d+\.\d+\.\d+(-[\w.]+)?$/);
+      expect(lock.packages[`node_modules/${name}`]?.version, name).toBe(pinned);
     }
   });
 

@@ -3,7 +3,7 @@ import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import type { Role } from '../../src/domain/access/permissions';
 import { newToken, tokenHash } from '../../src/server/auth/secret-link';
 import { axeFaults } from '../support/axe';
-import { hydrated, settled, signedInContext, startBrowser } from '../support/browser';
+import { headingsOf, hydrated, settled, signedInContext, startBrowser } from '../support/browser';
 import { testDatabase, type TestDatabase } from '../support/database';
 import { testFleet, type TestFleet } from '../support/fleet';
 import { startSite, type RunningSite } from '../support/server';
@@ -73,6 +73,8 @@ const LOOKS: readonly [Look, Look] = [
   { width: 1440, scheme: 'light' },
   { width: 390, scheme: 'dark' },
 ];
+/** The order for a window's next page: it goes on in the look that it has, or the page before would be drawn once more. */
+const order = new WeakMap<Page, readonly [Look, Look]>();
 /** One page for each who looks: a new one would be a new process, which reads axe and the site's scripts anew. */
 const windows = new Map<Role | null, Promise<Page>>();
 function pageFor(role: Role | null): Promise<Page> {
@@ -340,16 +342,6 @@ const PAGES: readonly Shown[] = [
   },
 ];
 
-/** How many headings of the first level a page has once the first is seen: what a phone keeps is read from its store. */
-const headingsOf = (page: Page): Promise<number> =>
-  page.evaluate(async () => {
-    const headings = document.getElementsByTagName('h1');
-    const seen = () => headings[0]?.checkVisibility({ visibilityProperty: true }) ?? false;
-    for (let tries = 0; !seen() && tries < 1000; tries++)
-      await new Promise((resolve) => setTimeout(resolve, 20));
-    return seen() ? headings.length : 0;
-  });
-
 /** Everything that is wrong with a page, in each look; empty: nothing. */
 async function faultsOf(page: Page, shown: Shown): Promise<string[]> {
   const faults: string[] = [];
@@ -359,13 +351,15 @@ async function faultsOf(page: Page, shown: Shown): Promise<string[]> {
       faults.push(`console: ${m.text()}`);
   });
   page.on('pageerror', (e) => faults.push(`script: ${e.message}`));
-  await lookAs(page, LOOKS[0]);
+  const looks = order.get(page) ?? LOOKS;
+  order.set(page, [looks[1], looks[0]]);
+  await lookAs(page, looks[0]);
   const response = await page.goto(site.url + shown.path(), { waitUntil: 'load' });
   if (response?.status() !== (shown.status ?? 200)) faults.push(`status ${response?.status()}`);
   await hydrated(page); // without a word in the console
   const headings = await headingsOf(page);
   if (headings !== 1) faults.push(`${headings} headings of the first level`);
-  for (const look of LOOKS) {
+  for (const look of looks) {
     await lookAs(page, look);
     await settled(page);
     const wider = await page.evaluate(

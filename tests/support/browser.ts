@@ -69,6 +69,16 @@ export const settled = (page: Page): Promise<unknown> =>
     await Promise.all(document.getAnimations().map((a) => a.finished.catch(() => undefined)));
   });
 
+/** How many headings of the first level a page has once the first is seen: what a phone keeps is read from its store. */
+export const headingsOf = (page: Page): Promise<number> =>
+  page.evaluate(async () => {
+    const headings = document.getElementsByTagName('h1');
+    const seen = () => headings[0]?.checkVisibility({ visibilityProperty: true }) ?? false;
+    for (let tries = 0; !seen() && tries < 1000; tries++)
+      await new Promise((resolve) => setTimeout(resolve, 20));
+    return seen() ? headings.length : 0;
+  });
+
 /** Signs in as a person does, on the page; `who` is the name before the @ of the test fleet. */
 export async function signInOn(page: Page, url: string, who: string): Promise<void> {
   await page.goto(`${url}/sign-in`);
