@@ -27,6 +27,9 @@ const PORT = Number(process.env.BENCH_PORT ?? 4441);
 const SIZES = (process.env.BENCH_SIZES ?? '1000,10000,100000').split(',').map(Number);
 const ROUNDS = Number(process.env.BENCH_ROUNDS ?? 40);
 const WARM_UP = 4;
+/** For what a reading costs: so many a second for so long. */
+const BURST_READINGS_A_S = 10_000;
+const BURST_S = 20;
 const PLANS = process.env.BENCH_PLANS ?? path.join(tmpdir(), 'wakeline-plans');
 /** What is aimed at, ms at p95. */
 const AIMS = {
@@ -145,11 +148,11 @@ async function measure(db: pg.Client, size: number): Promise<Cost> {
     }
     await load.stop();
     const before = usedBy(server.pid);
-    // more readings than a small fleet has in a minute, so that its cost can be told: the same number at each size
+    // at each size the same readings a second: what the process costs by itself falls on as many of them
     const burst = loadOn(staged, PORT, {
-      duration: 6,
-      ramp: 0,
-      speed: Math.min(600, 1000 * (10_000 / size)),
+      duration: BURST_S,
+      ramp: BURST_S / 4,
+      speed: (60 * BURST_READINGS_A_S) / size,
       shutdowns: 0,
       stuck: 0,
       drain: 20,
