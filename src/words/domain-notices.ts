@@ -8,7 +8,7 @@ export const noticeSaid = {
   stayedAway: 'It has stayed away for half an hour.',
   stayedAwayNoProof:
     'It has stayed away for half an hour. That is no proof: isolate, lock out and prove dead before any work, as ever.',
-  gatewaySilent: 'While it is silent, a shutdown of its units can’t be confirmed: treat them as live.',
+  cantBeConfirmed: 'Until they report, a shutdown of these units can’t be confirmed: treat them as live.',
   /** @param logger its name; may be empty */
   loggerGone: (logger: string) =>
     logger === ''

@@ -28,8 +28,6 @@ export interface Told {
 
 /** A logger that is back within the hour was not worth a word. */
 export const LOGGER_WAIT_S = 3600;
-/** Radio has its moments. */
-export const GATEWAY_WAIT_S = 15 * 60;
 /** What went away is over once it stayed away so long; coming back before that is the same line. */
 export const OVER_AFTER_S = 30 * 60;
 /** What merely happened is told while it is news; recorded later than this after it happened, it is history. */
@@ -61,18 +59,13 @@ function ofCause({ kind, detail }: NoticeEvent): Told[] {
   return [told(notice, { phase: kind === 'cause_closed' ? 'goes' : 'comes', subject: `cause:${cause}` })];
 }
 
-function ofPart(
-  { siteId }: NoticeEvent,
-  kind: NoticeKind,
-  part: string | null,
-  phase: Told['phase'],
-): Told[] {
-  if (!part) return [];
-  const waitS = kind === 'logger' ? LOGGER_WAIT_S : GATEWAY_WAIT_S;
-  return [told(kind, { phase, subject: `${kind}:${siteId}:${part}`, waitS: phase === 'comes' ? waitS : 0 })];
+function ofLogger({ siteId }: NoticeEvent, logger: string | null, phase: Told['phase']): Told[] {
+  if (!logger) return [];
+  const waitS = phase === 'comes' ? LOGGER_WAIT_S : 0;
+  return [told('logger', { phase, subject: `logger:${siteId}:${logger}`, waitS })];
 }
 
-/** @returns nothing for what is not worth telling */
+/** @returns nothing for what is not worth telling. A silent gateway is told as the cause of its silent units. */
 export function toldOf(event: NoticeEvent): Told[] {
   const { kind, detail } = event;
   const parts = (): Told[] => {
@@ -81,12 +74,9 @@ export function toldOf(event: NoticeEvent): Told[] {
       case 'cause_reopened':
       case 'cause_closed':
         return ofCause(event);
-      case 'gateway_silent':
-      case 'gateway_back':
-        return ofPart(event, 'silence', text(detail.gateway), kind === 'gateway_silent' ? 'comes' : 'goes');
       case 'logger_lost':
       case 'logger_connected':
-        return ofPart(event, 'logger', text(detail.logger), kind === 'logger_lost' ? 'comes' : 'goes');
+        return ofLogger(event, text(detail.logger), kind === 'logger_lost' ? 'comes' : 'goes');
       case 'hazard_acknowledged':
         return [told('hazard', { inProductOnly: true })];
       case 'case_opened':
@@ -117,8 +107,6 @@ export const TOLD_EVENTS = [
   'cause_opened',
   'cause_reopened',
   'cause_closed',
-  'gateway_silent',
-  'gateway_back',
   'logger_lost',
   'logger_connected',
   'hazard_acknowledged',

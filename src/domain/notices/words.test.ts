@@ -39,9 +39,13 @@ describe('the words of a notice', () => {
   });
 
   it('of what is silent say that a shutdown can’t be confirmed', () => {
-    const gateway = words(event('gateway_silent', { gateway: 'G2', units: 12 }));
-    expect(gateway.headline).toBe('G2 fell silent, 12 units behind it');
-    expect(gateway.body).toContain('can’t be confirmed');
+    const gateway = { cause: 'x', kind: 'silent', headline: 'Gateway G2 is silent: 12 units behind it' };
+    expect(words(event('cause_opened', gateway))).toEqual({
+      headline: gateway.headline,
+      body: 'Measured at the input. Until they report, a shutdown of these units can’t be confirmed: treat them as live.',
+    });
+    // the gateway's own event is in the history: nobody is told twice
+    expect(toldOf(event('gateway_silent', { gateway: 'G2', units: 12 }))).toEqual([]);
     expect(words(event('logger_lost', { logger: 'L7' })).headline).toBe(
       'The logger L7 has not reported for an hour',
     );

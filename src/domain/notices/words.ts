@@ -57,10 +57,12 @@ export function noticeWords(told: Told, event: NoticeEvent, cause: CauseWords | 
         };
       const back = kind === 'cause_reopened' ? noticeSaid.again(headline) : headline;
       if (hazard) return { headline: back, body: liveWords(cause?.units ?? []) };
-      return { headline: back, body: cause?.evidence ?? '' };
+      const evidence = cause?.evidence ?? '';
+      return {
+        headline: back,
+        body: told.kind === 'silence' ? `${evidence} ${noticeSaid.cantBeConfirmed}`.trim() : evidence,
+      };
     }
-    case 'gateway_silent':
-      return { headline: line, body: noticeSaid.gatewaySilent };
     case 'logger_lost':
       return {
         headline: noticeSaid.loggerGone(text(detail.logger)),
