@@ -112,7 +112,7 @@ export function Search() {
           setOpen(true);
         }}
         onKeyDown={onKeyDown}
-        className="target w-[108px] rounded border border-rule bg-sheet py-1 pl-2.5 pr-2 sm:pr-8 text-[15px] text-ink placeholder:text-ink-3 sm:w-[200px] lg:w-[300px] [&::-webkit-search-cancel-button]:hidden"
+        className="target w-[108px] text-ellipsis rounded border border-rule bg-sheet py-1 pl-2.5 pr-2 sm:pr-8 text-[15px] text-ink placeholder:text-ink-3 sm:w-[200px] lg:w-[300px] [&::-webkit-search-cancel-button]:hidden"
       />
       <kbd
         aria-hidden="true"
