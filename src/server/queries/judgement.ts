@@ -220,14 +220,19 @@ export async function writeJudgements(
 
 async function upsertJudgements(client: pg.ClientBase, rows: readonly JudgementRow[]): Promise<void> {
   const count = (pick: (c: UnitCounts) => number) => rows.map((r) => pick(r.counts));
+  // one a line: array literals and JSON have no raw ends of lines, and as an array every mark in them would be escaped
+  // here and undone there
+  const lines = (pick: (r: JudgementRow) => string) => rows.map(pick).join('\n');
   await client.query({
     name: 'judgements',
     text: `insert into string_judgement as j (string_id, site_id, frame_at, judged_at, state, verdict, since, finding, finding_since,
         evidence, memory, passing, shutdown, unheard, silent, dark, stuck, not_shutting_down, unconfirmed)
       select string_id, site_id, to_timestamp(nullif(frame_at, 0)), now(), state::int2[], verdict::int2[], since::int4[], finding,
         to_timestamp(finding_since), evidence, memory, passing, shutdown, unheard, silent, dark, stuck, not_shutting_down, unconfirmed
-      from unnest($1::int4[], $2::int4[], $3::int4[], $4::text[], $5::text[], $6::text[], $7::text[], $8::int4[], $9::jsonb[],
-        $10::jsonb[], $11::int2[], $12::int2[], $13::int2[], $14::int2[], $15::int2[], $16::int2[], $17::int2[], $18::int2[])
+      from unnest($1::int4[], $2::int4[], $3::int4[], string_to_array($4, e'\\n'), string_to_array($5, e'\\n'),
+        string_to_array($6, e'\\n'), $7::text[], $8::int4[], string_to_array($9, e'\\n')::jsonb[],
+        string_to_array($10, e'\\n')::json[], $11::int2[], $12::int2[], $13::int2[], $14::int2[], $15::int2[],
+        $16::int2[], $17::int2[], $18::int2[])
         x(string_id, site_id, frame_at, state, verdict, since, finding, finding_since, evidence, memory, passing, shutdown,
           unheard, silent, dark, stuck, not_shutting_down, unconfirmed)
       where exists (select from string where id = string_id)
@@ -241,13 +246,13 @@ async function upsertJudgements(client: pg.ClientBase, rows: readonly JudgementR
       rows.map((r) => r.stringId),
       rows.map((r) => r.siteId),
       rows.map((r) => r.frameAtS),
-      rows.map((r) => r.state),
-      rows.map((r) => r.verdict),
-      rows.map((r) => r.since),
+      lines((r) => r.state),
+      lines((r) => r.verdict),
+      lines((r) => r.since),
       rows.map((r) => r.finding),
       rows.map((r) => r.findingSinceS),
-      rows.map((r) => r.evidence),
-      rows.map((r) => r.kept),
+      lines((r) => r.evidence),
+      lines((r) => r.kept),
       count((c) => c.passing),
       count((c) => c.shutdown),
       count((c) => c.unheard),
