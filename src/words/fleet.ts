@@ -82,7 +82,6 @@ export const fleetFindingWords = {
   and: ', and ',
   noSiteIsSet: 'No site is set up yet',
   sitesAppearHereAs: 'Sites appear here as soon as their plant is entered.',
-  atListedSaidNames: (listedSaid: string, names: number) => `at ${listedSaid}${names > 3 ? ' and more' : ''}`,
   thereElsewhereSites: (there: string, sites: string) => `${there} Elsewhere ${sites}.`,
   doesNotReport: (away: undefined | string) => `${away} does not report`,
   ofSitesDoNot: (away: number, sites: number) =>

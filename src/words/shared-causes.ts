@@ -1,4 +1,4 @@
-import { counted, energy, percent } from '../drawings/numbers';
+import { counted, energy, listed, percent } from '../drawings/numbers';
 
 export const sharedCausesAcknowledge = {
   puttingYourNameTo: 'Putting your name to it …',
@@ -21,6 +21,9 @@ export const causeSheet = {
 };
 
 export const sharedCausesFinding = {
+  /** Which: all that are few, of many the first three. */
+  atNamed: (names: readonly string[]) =>
+    `at ${listed(names.length <= 3 ? names : [...names.slice(0, 3), counted(names.length - 3, 'more site')])}`,
   atX: (x: undefined | string) => `at ${x}`,
   atSites: (names: string) => `at ${names} sites`,
   didNotShutDown: (who: string) => `${who} did not shut down`,

@@ -80,7 +80,6 @@ export const shutdownFindingWords = {
     `At ${lost <= 3 ? listedSaid : `${lost2} sites`} the keep-alive or the power of a zone went.`,
   noUnitIsStuck: 'No unit is stuck, and none is known to pass against a command',
   noZoneIsIn: 'No zone is in shutdown. What a home run carries only a rated meter shows.',
-  atListedSaidNames: (listedSaid: string, names: number) => `at ${listedSaid}${names > 3 ? ' and more' : ''}`,
   countedUnitsUnit: (units: number) => counted(units, 'unit'),
   besidesOthers: (others: string) => `Besides, ${others}.`,
   didNotShutDown: 'did not shut down',

@@ -16,6 +16,7 @@ export const statusSheets = {
   loggers: 'Loggers',
   newestRefusalFirst: 'newest refusal first',
   loggersWithTheirConnection: 'Loggers with their connection and what was refused from them',
+  moreLoggers: (loggers: number) => `${counted(loggers, 'logger')} more`,
   noLoggerIsEntered: 'No logger is entered yet',
   work: 'Work',
   newestFrame: 'Newest frame',

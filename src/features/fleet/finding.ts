@@ -2,6 +2,7 @@ import { countInside, headingOf, WHAT_TO_DO } from '../../components/causes/find
 import { GRAVITY } from '../../components/causes/words';
 import { listed } from '../../drawings/numbers';
 import type { CauseNow, SiteNow } from '../../schemas/api/now';
+import { sharedCausesFinding } from '../../words/shared-causes';
 import { fleetFindingWords } from '../../words/fleet';
 
 export interface Finding {
@@ -68,10 +69,7 @@ export function fleetFinding(sites: readonly SiteNow[], causes: readonly CauseNo
   if (worst) {
     const ofIt = causes.filter((c) => c.verdict === worst);
     const names = new Set(ofIt.map((c) => c.siteName));
-    const there =
-      names.size === 1
-        ? 'there'
-        : fleetFindingWords.atListedSaidNames(listed([...names].slice(0, 3)), names.size);
+    const there = names.size === 1 ? 'there' : sharedCausesFinding.atNamed([...names]);
     return {
       heading: headingOf(worst, ofIt),
       sentence: fleetFindingWords.thereElsewhereSites(WHAT_TO_DO[worst](there), standing(sites, worst)),

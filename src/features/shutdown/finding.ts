@@ -3,6 +3,7 @@ import { GRAVITY } from '../../components/causes/words';
 import { listed } from '../../drawings/numbers';
 import type { CauseNow, SiteNow } from '../../schemas/api/now';
 import { heldSites } from './groups';
+import { sharedCausesFinding } from '../../words/shared-causes';
 import { shutdownFindingWords } from '../../words/shutdown';
 
 /** What is in shutdown without being a fault: "Lantern Works is in shutdown on purpose." */
@@ -40,10 +41,7 @@ export function shutdownFinding(
     };
   const ofIt = causes.filter((c) => c.verdict === worst);
   const names = [...new Set(ofIt.map((c) => c.siteName))];
-  const there =
-    names.length === 1
-      ? 'there'
-      : shutdownFindingWords.atListedSaidNames(listed(names.slice(0, 3)), names.length);
+  const there = names.length === 1 ? 'there' : sharedCausesFinding.atNamed(names);
   const others = GRAVITY.filter((v) => v !== worst && causes.some((c) => c.verdict === v)).map((verdict) => {
     const units = causes.filter((c) => c.verdict === verdict).reduce((n, c) => n + c.units.length, 0);
     return `${shutdownFindingWords.countedUnitsUnit(units)} ${OTHER[verdict](units)}`;
