@@ -1,6 +1,7 @@
 import { CASE_KIND_WORDS } from '../../words/domain-cases';
 import type { CauseKind } from '../../domain/causes/kinds';
 import { energy, money } from '../../drawings/numbers';
+import { lookOf } from '../../components/states/words';
 import type { Tone } from '../../components/ui/Tag';
 import type { CauseItem, CausesPage } from '../../schemas/api/causes';
 import { causesWords } from '../../words/causes';
@@ -8,10 +9,11 @@ import { causesWords } from '../../words/causes';
 export const kindWords = (kind: CauseKind): string => CASE_KIND_WORDS[kind];
 
 export const KIND_TONE: Record<CauseKind, { tone: Tone; shape: string }> = {
-  not_shutting_down: { tone: 'crimson', shape: '!' },
-  stuck: { tone: 'rust', shape: '▁' },
-  unconfirmed: { tone: 'outline', shape: '?' },
-  silent: { tone: 'slate', shape: '▨' },
+  // as everywhere else
+  not_shutting_down: lookOf(null, 'not_shutting_down'),
+  stuck: lookOf(null, 'stuck'),
+  unconfirmed: lookOf(null, 'unconfirmed'),
+  silent: lookOf('silent', null),
   low_output: { tone: 'rust', shape: '↓' },
   loop_resistance: { tone: 'rust', shape: 'Ω' },
   wrong_string: { tone: 'outline', shape: '⇄' },
