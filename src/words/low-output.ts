@@ -22,7 +22,7 @@ export const lowOutputPage = {
   causes: 'Causes',
   lowStrings: 'Low strings',
   strings: 'Strings',
-  rowsOfRows: (rows: number, rows2: number) => `${rows} of ${rows2}`,
+  rowsOfRows: (rows: number, rows2: number) => `${number(rows)} of ${number(rows2)}`,
   rows: 'strings',
   findBySiteString: 'Find by site, string, plane or words',
   siteStringPlane: 'Site, string, plane',

@@ -15,7 +15,7 @@ export interface Sorting {
   key: string;
   descending: boolean;
 }
-interface Props<Row> {
+export interface TableProps<Row> {
   caption: string;
   columns: readonly Column<Row>[];
   rows: readonly Row[];
@@ -42,7 +42,7 @@ function moveByArrow(event: KeyboardEvent<HTMLTableSectionElement>): void {
 }
 
 /** A table with sortable heads and rows that the arrow keys walk. */
-export function Table<Row>({ caption, columns, rows, rowKey, sorting, onSort, empty }: Props<Row>) {
+export function Table<Row>({ caption, columns, rows, rowKey, sorting, onSort, empty }: TableProps<Row>) {
   return (
     <div className="overflow-x-auto">
       <table className="w-full border-collapse text-left">

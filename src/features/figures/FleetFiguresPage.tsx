@@ -1,10 +1,11 @@
 import { ButtonLink } from '../../components/ui/Button';
 import { FigureSheet, type Card } from '../../components/ui/FigureSheet';
 import { Heading } from '../../components/ui/Heading';
+import { LongTable } from '../../components/ui/LongTable';
 import { Notice } from '../../components/ui/Notice';
 import { SearchInput } from '../../components/ui/SearchInput';
 import { Sheet } from '../../components/ui/Sheet';
-import { Table, type Column } from '../../components/ui/Table';
+import type { Column } from '../../components/ui/Table';
 import { energy, money, number, percent, quantity, UNKNOWN } from '../../drawings/numbers';
 import { withQuery } from '../../lib/api';
 import { useViewInUrl } from '../../lib/view-in-url';
@@ -198,10 +199,11 @@ export function FleetFiguresPage({ f, finding, sentence, view: asked, defaults }
                 onChange={(q) => setView({ q }, 'typed')}
               />
             </form>
-            <Table
+            <LongTable
               caption={fleetFiguresPage.figuresOfBySite(f.period.label)}
               columns={columns}
               rows={rows}
+              what={fleetFiguresPage.sites2}
               rowKey={(r) => r.site.id}
               sorting={{ key: view.sort, descending: view.order === 'down' }}
               onSort={({ key, descending }) => {

@@ -1,14 +1,13 @@
 import { QueryClientProvider } from '@tanstack/react-query';
-import { useState } from 'react';
 import { SavedViews } from '../../components/saved-views/SavedViews';
 import { ButtonLink } from '../../components/ui/Button';
 import { Choice } from '../../components/ui/Choice';
 import { Heading } from '../../components/ui/Heading';
+import { LongTable } from '../../components/ui/LongTable';
 import { Notice } from '../../components/ui/Notice';
 import { SearchInput } from '../../components/ui/SearchInput';
 import { Sheet } from '../../components/ui/Sheet';
-import { ShowMore } from '../../components/ui/ShowMore';
-import { Table, type Column } from '../../components/ui/Table';
+import type { Column } from '../../components/ui/Table';
 import { energy, money, percent, UNKNOWN } from '../../drawings/numbers';
 import { shortDate } from '../../drawings/times';
 import { withQuery } from '../../lib/api';
@@ -33,9 +32,6 @@ interface Props {
   view: LowOutputView;
   defaults: LowOutputView;
 }
-
-/** Rows before somebody asks for more. */
-const ROWS_AT_ONCE = 50;
 
 const day = (text: string): string => shortDate(`${text}T12:00:00Z`, 'UTC');
 const between = (r: LowString): string =>
@@ -168,7 +164,6 @@ function columnsFor(low: LowOutput): Column<LowString>[] {
 
 function Page({ low, saved, view: asked, defaults }: Props) {
   const [view, setView] = useViewInUrl(asked, defaults);
-  const [most, setMost] = useState(ROWS_AT_ONCE);
   const rows = lowRows(low.rows, view);
   const { heading, sentence } = lowFinding(low);
   const sites = [...new Map(low.rows.map((r) => [r.site.id, r.site.name]))].sort((a, b) =>
@@ -240,10 +235,11 @@ function Page({ low, saved, view: asked, defaults }: Props) {
           <div className="mb-3">
             <SavedViews list="low_output" path={paths.lowOutput()} query={query} initial={saved} />
           </div>
-          <Table
+          <LongTable
             caption={lowOutputPage.stringsThatMakeLess}
             columns={columnsFor(low)}
-            rows={rows.slice(0, most)}
+            rows={rows}
+            what={lowOutputPage.rows}
             rowKey={(r) => r.string.id}
             sorting={{ key: view.sort, descending: view.order === 'down' }}
             onSort={({ key, descending }) => {
@@ -251,12 +247,6 @@ function Page({ low, saved, view: asked, defaults }: Props) {
               if (sort) setView({ sort, order: descending ? 'down' : 'up' });
             }}
             empty={<p className="py-4 text-ink-2">{lowOutputPage.noLowStringIs}</p>}
-          />
-          <ShowMore
-            shown={Math.min(most, rows.length)}
-            of={rows.length}
-            what={lowOutputPage.rows}
-            onMore={() => setMost(most + 4 * ROWS_AT_ONCE)}
           />
           <p className="mt-3 text-xs text-ink-3">{lowOutputPage.asEachStringsNewest}</p>
         </Sheet>
