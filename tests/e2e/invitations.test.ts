@@ -108,7 +108,7 @@ async function report(page: Page): Promise<void> {
     [words],
   );
   expect(rows).toEqual([{ origin: 'customer', state: 'open', figures: true }]);
-  await page.getByText('Each month', { exact: true }).click();
+  await press(page.getByRole('radio', { name: 'Each month' }));
   await page.getByText('on the first of the month').waitFor();
   expect((await db.owner.query('select every from roof_letter')).rows).toEqual([{ every: 'month' }]);
 }

@@ -42,7 +42,7 @@ export async function shareJourney(
   await press(manager.getByRole('button', { name: `End it: ${label}` }));
   await press(dialog.getByRole('button', { name: 'End it' }));
   await manager.getByRole('button', { name: `End it: ${label}` }).waitFor({ state: 'detached' });
-  await manager.getByText(/Ended and run out/).click();
+  await press(manager.locator('summary', { hasText: /Ended and run out/ }));
   await manager.getByText(label).first().waitFor();
   faults.push(...(await faultsShown(manager, 'the manager’s sheet', manager.viewportSize()?.width ?? 0)));
   expect((await anybody.goto(url + pathname))?.status()).toBe(404);
