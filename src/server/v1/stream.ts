@@ -118,10 +118,7 @@ export function bodyOf(stream: RecordStream, reader: Reader): ReadableStream<Uin
           controller.close();
         } catch (error) {
           await finish();
-          log.warn(
-            { error: error instanceof Error ? error.message : error },
-            'a stream broke off',
-          );
+          log.warn({ error: error instanceof Error ? error.message : error }, 'a stream broke off');
           controller.error(error);
         }
       },

@@ -1,4 +1,4 @@
-import { ordinal, roofPlaceSaid, WINDS } from '../../../words/domain-roof';
+import { roofPlaceSaid, WINDS } from '../../../words/domain-roof';
 
 /** A string laid on the roof row by row: where each module lies in plan, and how a person would say it. */
 
