@@ -12,8 +12,6 @@ export interface Count {
 export interface Whole {
   finding: ReturnType<typeof shutdownFinding>;
   groups: Partial<Record<Group['verdict'], Count>>;
-  /** Causes there are, whatever the view shows. */
-  causes: number;
 }
 
 export const countOf = ({ causes }: Pick<Group, 'causes'>): Count => ({
@@ -43,7 +41,6 @@ export function firstPage(
     whole: {
       finding: shutdownFinding(now.sites, now.causes),
       groups: Object.fromEntries(groups.map((g) => [g.verdict, countOf(g)])),
-      causes: now.causes.length,
     },
   };
 }
