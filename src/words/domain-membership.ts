@@ -4,6 +4,7 @@ export const DECISIVE_METHOD =
   "Decisive: a qualified person isolates one string by the site's procedure, and whose current goes to zero?";
 
 export const membershipSaid = {
+  noCurrent: 'Its string carried no current in these hours: it can not be told.',
   tooFewSamples: 'Too few samples with current: before the inverter runs this can not be told.',
   twoFit: (own: string, one: string, other: string) =>
     `It does not carry the current of ${own}; ${one} and ${other} fit alike. ${DECISIVE_METHOD}`,

@@ -56,7 +56,6 @@ export const jobRefusals = {
 };
 
 export const membershipWords = {
-  noCurrent: 'Its string carried no current in these hours: it can not be told.',
   noneWorthJudging: 'It reported no current worth judging: the string or the inverter did not run.',
   tooFewReports: 'Too few reports with current.',
   tooAlike: 'Its string and others carry the same current, closer than its accuracy can part them.',

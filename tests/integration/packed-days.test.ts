@@ -15,7 +15,7 @@ import { ensureDays, parkFrames, writeFrames } from '../../src/server/queries/in
 import type { FrameRow } from '../../src/server/queries/ingest-rows';
 import { watchedCurrents } from '../../src/server/queries/isolation';
 import { framesAfter } from '../../src/server/queries/judgement';
-import { firstReport, unitCurrents } from '../../src/server/queries/membership';
+import { heardMoments, unitCurrents } from '../../src/server/queries/membership';
 import { loopRows, quartersIn } from '../../src/server/queries/output-series';
 import { beginPacking, finishPacking } from '../../src/server/queries/packing';
 import { rollStringQuarter } from '../../src/server/queries/rollup';
@@ -114,6 +114,9 @@ async function everything(tx: Tx): Promise<unknown[]> {
 async function answers(tx: Tx) {
   const [one, two] = strings as [(typeof strings)[0], (typeof strings)[0]];
   const siblings = strings.slice(1).map((s) => ({ id: s.id, units: s.slots }));
+  const inTens = { ...window, lengthS: 600 };
+  const heard = await heardMoments(tx, site.id, inTens);
+  const moments = heard.map((m) => m.atS);
   const pieces: unknown[] = [];
   for await (const piece of framesInPieces(tx, { stringIds: ids(), ...window })) pieces.push(...piece);
   const options = {
@@ -134,8 +137,8 @@ async function answers(tx: Tx) {
     then: await frameAt(tx, two.id, new Date((startS + 3601) * 1000), 300),
     inside: await quartersIn(tx, ids(), window),
     loop: await loopRows(tx, ids(), window, 60),
-    heat: (await unitCurrents(tx, site.id, { ...window, stepS: 600 })).frames,
-    first: await firstReport(tx, site.id, window),
+    heard,
+    heat: (await unitCurrents(tx, site.id, inTens, moments)).frames,
     watched: await watchedCurrents(tx, site.id, { ...window, began: window.to }),
     evidence: (await framesIn(tx, ids(), window)).map((f) => JSON.stringify(f)).sort(),
     kept: (await keptSpan(tx, 'string_frame'))?.from,

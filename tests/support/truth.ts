@@ -11,24 +11,35 @@ import {
   UNIT_TYPES,
 } from '../../simulator/scenarios/catalogue';
 import { layOut, type Block, type SiteSpec } from '../../simulator/scenarios/lay-out';
-import { PLACES, placeAtHour } from '../../simulator/scenarios/places';
+import { PLACES, placeAtHour, type Place } from '../../simulator/scenarios/places';
 import type { UnitState, Verdict } from '../../src/domain/verdicts/codes';
 
 /** Small sites of every kind of unit, for holding Wakeline's conclusions against the simulator's truth. */
+
+export type TruthKind =
+  'Monitored' | 'Holding' | 'Keep-alive' | 'Shutdown-only' | 'Optimizing' | 'Commissioning';
+export interface TruthSite {
+  name: string;
+  kind: TruthKind;
+}
 
 export const INTERVAL_S = 30;
 const plane = { name: 'Roof', surfaceTilt: 10, surfaceAzimuth: 180, albedo: 0.2 };
 const climate = { clearShare: 1, cloudyShare: 0, fairToday: true };
 
-export function truthFleet(since: number): FleetPlan {
+/** A fleet of these sites, where it is morning: the light outlasts a test's hours. */
+export function truthFleet(since: number, sites: readonly TruthSite[]): FleetPlan {
   const free = [...PLACES];
+  const places = new Map<TruthKind, Place>();
   const site = (
-    name: string,
+    { name, kind }: TruthSite,
     unitType: string,
     blocks: Partial<Block>[],
     more: Partial<SiteSpec> = {},
-  ): SitePlan =>
-    layOut(
+  ): SitePlan => {
+    const place = places.get(kind) ?? placeAtHour(free, since, 9.5);
+    places.set(kind, place);
+    return layOut(
       {
         name,
         switchedOnOn: more.stage === 'commissioning' ? null : '2025-03-03',
@@ -54,10 +65,10 @@ export function truthFleet(since: number): FleetPlan {
         })),
         ...more,
       },
-      // A morning: the light outlasts the test's hours.
-      placeAtHour(free, since, 9.5),
+      place,
       { modules: MODULE_TYPES, units: UNIT_TYPES },
     );
+  };
   const twoZones: Partial<SiteSpec> = {
     initiators: [
       { name: 'Initiator', place: '' },
@@ -73,6 +84,14 @@ export function truthFleet(since: number): FleetPlan {
     ],
   };
   const served: Partial<Block>[] = [{ transmitters: ['T1'] }, { transmitters: ['T2'], zone: 'Other roof' }];
+  const ofKind: Record<TruthKind, (site: TruthSite) => SitePlan> = {
+    Monitored: (s) => site(s, BOTH_SIDES, [{}, {}]),
+    Holding: (s) => site(s, HOLDING, [{}, {}]),
+    'Keep-alive': (s) => site(s, ON_KEEP_ALIVE, served, twoZones),
+    'Shutdown-only': (s) => site(s, SHUTDOWN_ONLY, served, twoZones),
+    Optimizing: (s) => site(s, OPTIMIZING, [{}]),
+    Commissioning: (s) => site(s, BOTH_SIDES, [{}], { stage: 'commissioning' }),
+  };
   return {
     seed: 11,
     since,
@@ -84,14 +103,7 @@ export function truthFleet(since: number): FleetPlan {
         people: [{ email: 'technician@truth.example', name: 'Una Lathe', role: 'technician', sites: [] }],
         moduleTypes: MODULE_TYPES,
         unitTypes: UNIT_TYPES,
-        sites: [
-          site('Monitored', BOTH_SIDES, [{}, {}]),
-          site('Holding', HOLDING, [{}, {}]),
-          site('Keep-alive', ON_KEEP_ALIVE, served, twoZones),
-          site('Shutdown-only', SHUTDOWN_ONLY, served, twoZones),
-          site('Optimizing', OPTIMIZING, [{}]),
-          site('Commissioning', BOTH_SIDES, [{}], { stage: 'commissioning' }),
-        ],
+        sites: sites.map((s) => ofKind[s.kind](s)),
       },
     ],
   };

@@ -1,4 +1,5 @@
 import { membershipSaid } from '../../words/domain-membership';
+import { typicalOf } from './membership-evidence';
 import { median, sigmaMad } from './robust';
 
 /**
@@ -35,7 +36,10 @@ export interface MembershipOptions {
   currentMin?: number;
 }
 
-const CURRENT_MIN = 0.5;
+/** A, from which a current says something of where a unit sits. */
+export const CURRENT_MIN = 0.5;
+/** What no unit is taken to be better than. */
+const ACCURACY_MIN = 0.002;
 /** Samples that are taken to be independent: neighbours in time repeat each other. */
 const SAMPLES_MAX = 60;
 const SAMPLES_MIN = 12;
@@ -57,34 +61,51 @@ const Z_MAX = 3;
 
 /**
  * Judges every unit of every string. `cant_tell` where no string runs, too few samples are left, or the strings'
- * currents differ by less than the accuracy can part.
+ * currents differ by less than the accuracy can part. A string that never carried current says nothing and would keep
+ * the others from being told: theirs are judged without it.
  */
 export function judgeMembership(strings: readonly MemberString[], options: MembershipOptions): Membership[] {
-  const { accuracy, currentMin = CURRENT_MIN } = options;
+  const { currentMin = CURRENT_MIN } = options;
+  const carrying = strings.filter((s) => typicalOf(s.currents).some((i) => i >= currentMin));
+  const judged = carrying.length < 2 ? strings : carrying;
+  const accuracy = Math.max(ACCURACY_MIN, options.accuracy);
+  const told = new Map(judgeTogether(judged, accuracy, currentMin).map((of, i) => [judged[i]!, of]));
+  return strings.flatMap(
+    (s) => told.get(s) ?? s.currents.map((_, unit) => madeOf(s, unit)('cant_tell', membershipSaid.noCurrent)),
+  );
+}
+
+/** What is said of one unit, where nothing else is known of it. */
+const madeOf =
+  (s: MemberString, unit: number) =>
+  (outcome: MembershipOutcome, words: string, more: Partial<Membership> = {}): Membership => ({
+    string: s.name,
+    unit,
+    outcome,
+    otherString: null,
+    logOdds: 0,
+    undecidedWith: [],
+    words,
+    ...more,
+  });
+
+/** Of each string, its units. */
+function judgeTogether(
+  strings: readonly MemberString[],
+  accuracy: number,
+  currentMin: number,
+): Membership[][] {
   const steps = strings[0]?.currents[0]?.length ?? 0;
-  const typical = strings.map((s) => typicalCurrent(s, steps));
+  const typical = strings.map((s) => typicalOf(s.currents));
   const chosen = chooseSamples(typical, steps, currentMin);
   const logs = typical.map((t) => chosen.map((q) => Math.log(t[q]!)));
   const relative = learnNoise(strings, logs, chosen);
   const noise = chosen.map((q) => Math.hypot(relative, RESOLUTION / Math.min(...typical.map((t) => t[q]!))));
 
-  return strings.flatMap((s, own) =>
+  return strings.map((s, own) =>
     s.currents.map((current, unit): Membership => {
       const usable = chosen.flatMap((q, k) => (current[q]! >= currentMin ? [k] : []));
-      const made = (
-        outcome: MembershipOutcome,
-        words: string,
-        more: Partial<Membership> = {},
-      ): Membership => ({
-        string: s.name,
-        unit,
-        outcome,
-        otherString: null,
-        logOdds: 0,
-        undecidedWith: [],
-        words,
-        ...more,
-      });
+      const made = madeOf(s, unit);
       if (usable.length < SAMPLES_MIN) return made('cant_tell', membershipSaid.tooFewSamples);
       const mine = usable.map((k) => Math.log(current[chosen[k]!]!));
       const likely = logs.map((log) =>
@@ -128,16 +149,6 @@ export function judgeMembership(strings: readonly MemberString[], options: Membe
       return made('here', membershipSaid.here(s.name), { logOdds: best?.odds ?? 0 });
     }),
   );
-}
-
-/** Median over a string's units at each step: one wrong unit doesn't move it. */
-function typicalCurrent(s: MemberString, steps: number): Float64Array {
-  const out = new Float64Array(steps).fill(NaN);
-  for (let q = 0; q < steps; q++) {
-    const values = s.currents.flatMap((c) => (Number.isNaN(c[q]!) ? [] : [c[q]!]));
-    if (values.length > 0 && values.length >= s.currents.length / 2) out[q] = median(values);
-  }
-  return out;
 }
 
 /** Steps at which every string runs; of many, those where the strings differ most, spread over the time. */

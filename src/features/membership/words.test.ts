@@ -17,6 +17,7 @@ const suspect = (name: string, more: Partial<MembershipSuspect> = {}): Membershi
     fitsOwn: false,
     otherString: 'D1',
     otherStringId: `${ID}2`,
+    logOdds: 40,
     apartOwn: 0.06,
     apartOther: 0.004,
     steps: 22,

@@ -18,6 +18,8 @@ export const membershipUnit = z.object({
   fitsOwn: z.boolean(),
   otherString: z.string().nullable(),
   otherStringId: id.nullable(),
+  /** ln of the odds of the string that fits best among the others, against its own. */
+  logOdds: z.number(),
   /** Median of |its current / the string's − 1|, 0 … ; null: never enough current together. */
   apartOwn: z.number().nullable(),
   apartOther: z.number().nullable(),

@@ -1,5 +1,6 @@
+import type { Heard } from '../../domain/output/membership-moments';
 import type { Tx } from '../db/transaction';
-import { anyString, framesOf, oneString, packedFrames, singleFrames, SPAN } from './frames';
+import { anyString, framesOf, SPAN } from './frames';
 
 /** Currents of a site's units over time. Whoever calls has checked that the actor may see the site. */
 
@@ -12,18 +13,39 @@ export interface CurrentRows {
     slots: { position: number; serial: string }[];
     currentAccuracy: number;
   }[];
-  /** One report of a string in a step: epoch seconds of the step, mA in slot order. */
-  frames: { stringId: number; step: number; current: (number | null)[] }[];
+  /** One report of a string in a moment: epoch seconds where that begins, mA in slot order. */
+  frames: { stringId: number; moment: number; current: (number | null)[] }[];
+}
+
+const telling = (id: string): string =>
+  `${id} in (select s.id from string s where s.site_id = :siteId and s.kind <> 'shutdown_only')`;
+
+/** The beginning of the moment of `:lengthS` seconds that `at` lies in, epoch seconds. */
+const MOMENT = `(floor(extract(epoch from at)::float8 / :lengthS::float8) * :lengthS::float8)`;
+
+/** The moments within a window in which strings reported whose units tell their current, ascending. */
+export async function heardMoments(
+  tx: Tx,
+  siteId: number,
+  window: { from: Date; to: Date; lengthS: number },
+): Promise<Heard[]> {
+  const { rows } = await tx.raw<{ rows: Heard[] }>(
+    `select ${MOMENT} as "atS", count(distinct string_id)::int as strings
+     from ${framesOf({ columns: [], strings: telling, ...SPAN })} r group by 1 order by 1`,
+    { siteId, ...window },
+  );
+  return rows;
 }
 
 /**
- * Of each step of `stepS` seconds the newest report of every string whose units tell their current. A unit that has
- * moved since the window began is read from its move on only.
+ * At each of these moments the newest report of every string whose units tell their current. A unit that has moved
+ * since the window began is read from its move on only.
  */
 export async function unitCurrents(
   tx: Tx,
   siteId: number,
-  window: { from: Date; to: Date; stepS: number },
+  window: { from: Date; to: Date; lengthS: number },
+  moments: readonly number[],
 ): Promise<CurrentRows> {
   const { rows: strings } = await tx.raw<{ rows: CurrentRows['strings'] }>(
     `select s.id, s.ref, s.name, ut.current_accuracy::float8 as "currentAccuracy",
@@ -39,34 +61,16 @@ export async function unitCurrents(
     { siteId },
   );
   const { rows: frames } = await tx.raw<{ rows: CurrentRows['frames'] }>(
-    `select f.string_id as "stringId", f.step, f.current
-     from (select distinct on (f.string_id, f.step) f.string_id, f.step, f.current
-           from (select string_id, at, current,
-                        extract(epoch from date_bin(make_interval(secs => :stepS), at, timestamptz '2000-01-01 00:00Z'))::int8::float8 as step
+    `select f.string_id as "stringId", f.moment, f.current
+     from (select distinct on (f.string_id, f.moment) f.string_id, f.moment, f.current
+           from (select string_id, at, current, ${MOMENT} as moment
                  from ${framesOf({ columns: ['current'], strings: anyString, ...SPAN })} r) f
-           order by f.string_id, f.step, f.at desc) f
-     order by f.step, f.string_id`,
-    { ids: strings.map((s) => s.id), from: window.from, to: window.to, stepS: window.stepS },
+           where f.moment = any (:moments::float8[])
+           order by f.string_id, f.moment, f.at desc) f
+     order by f.moment, f.string_id`,
+    { ids: strings.map((s) => s.id), moments: [...moments], ...window },
   );
   return { strings, frames };
-}
-
-const OF_STRING = { columns: [], strings: oneString('s.id'), ...SPAN };
-
-/** When the site's strings first reported within a window; null: not at all. */
-export async function firstReport(
-  tx: Tx,
-  siteId: number,
-  window: { from: Date; to: Date },
-): Promise<Date | null> {
-  const { rows } = await tx.raw<{ rows: { at: Date | null }[] }>(
-    `select min(first.at) as at from string s
-     cross join lateral (select min(f.at) as at from (${singleFrames(OF_STRING)}) f
-       union all select min(f.at) from (${packedFrames(OF_STRING)}) f) first
-     where s.site_id = :siteId and s.kind <> 'shutdown_only'`,
-    { siteId, ...window },
-  );
-  return rows[0]?.at ?? null;
 }
 
 /** Since when each placed unit sits in its slot, where that began within the window: epoch seconds by serial. */

@@ -1,19 +1,17 @@
-import { judgeMembership, ODDS_NEEDED, type Membership } from '../../domain/output/membership';
+import { CURRENT_MIN, judgeMembership, ODDS_NEEDED, type Membership } from '../../domain/output/membership';
 import { apartFrom, counterpartOf, typicalOf } from '../../domain/output/membership-evidence';
+import { chooseMoments, momentLength } from '../../domain/output/membership-moments';
 import type { MembershipPage, MembershipSuspect, MembershipUnit } from '../../schemas/api/membership';
 import type { Tx } from '../db/transaction';
 import { found } from '../errors';
-import { firstReport, movedSince, muteUnits, unitCurrents, type CurrentRows } from '../queries/membership';
+import { reportIntervalOf } from '../queries/isolation';
+import { heardMoments, movedSince, muteUnits, unitCurrents, type CurrentRows } from '../queries/membership';
 import { stringsNow } from '../queries/now';
 import { sitesNow } from '../queries/sites-now';
 import { visibleSite, type VisibleSite } from '../queries/visible-site';
 import { readIsolations } from './isolation';
 import { membershipWords } from '../../words/refusals-cases';
 
-/** A, from which a current says something of where a unit sits. */
-const CURRENT_MIN = 0.5;
-/** Steps of a window at most: more say nothing new, neighbours repeat each other. */
-const STEPS_MAX = 240;
 /** Suspects whose currents are drawn. */
 const DRAWN_MAX = 24;
 
@@ -28,11 +26,11 @@ interface Read {
 
 async function read(tx: Tx, siteId: number, hours: number, at: Date): Promise<Read> {
   const from = new Date(at.getTime() - hours * 3_600_000);
-  const first = (await firstReport(tx, siteId, { from, to: at })) ?? at;
-  const stepS = Math.max(60, Math.ceil((at.getTime() - first.getTime()) / 60_000 / STEPS_MAX) * 60);
-  const rows = await unitCurrents(tx, siteId, { from, to: at, stepS });
+  const lengthS = momentLength(await reportIntervalOf(tx, siteId));
+  const window = { from, to: at, lengthS };
+  const { stepS, atS: steps } = chooseMoments(await heardMoments(tx, siteId, window), lengthS);
+  const rows = await unitCurrents(tx, siteId, window, steps);
   const moved = await movedSince(tx, siteId, from);
-  const steps = [...new Set(rows.frames.map((f) => f.step))].sort((a, b) => a - b);
   const index = new Map(steps.map((s, i) => [s, i]));
   const currents = new Map(
     rows.strings.map((s) => [s.id, s.slots.map(() => new Float64Array(steps.length).fill(NaN))]),
@@ -42,8 +40,8 @@ async function read(tx: Tx, siteId: number, hours: number, at: Date): Promise<Re
     const string = strings.get(frame.stringId);
     string?.slots.forEach(({ position, serial }, k) => {
       const mA = frame.current[position - 1];
-      if (mA === null || mA === undefined || frame.step < (moved.get(serial) ?? 0)) return;
-      currents.get(string.id)![k]![index.get(frame.step)!] = mA / 1000;
+      if (mA === null || mA === undefined || frame.moment < (moved.get(serial) ?? 0)) return;
+      currents.get(string.id)![k]![index.get(frame.moment)!] = mA / 1000;
     });
   }
   const typical = [...currents.values()].map((units) => typicalOf(units));
@@ -77,16 +75,12 @@ interface Judgement {
 function judge({ rows, currents }: Read): Judgement {
   const strings = rows.strings.filter((s) => s.slots.length > 0);
   if (strings.length === 0) return { units: [], typicals: new Map() };
-  // a string that never carried current in the window says nothing and would keep the others from being told
-  const carrying = strings.filter((s) => typicalOf(currents.get(s.id) ?? []).some((i) => i >= CURRENT_MIN));
-  const judged = carrying.length < 2 ? strings : carrying;
-  const accuracy = Math.max(...judged.map((s) => s.currentAccuracy));
   const results = judgeMembership(
-    judged.map((s) => ({ name: s.name, currents: currents.get(s.id) ?? [] })),
-    { accuracy: Math.max(0.002, accuracy) },
+    strings.map((s) => ({ name: s.name, currents: currents.get(s.id) ?? [] })),
+    { accuracy: Math.max(...strings.map((s) => s.currentAccuracy)) },
   );
-  const byName = new Map(judged.map((s) => [s.name, s]));
-  const typicals = new Map(judged.map((s) => [s.name, typicalOf(currents.get(s.id) ?? [])]));
+  const byName = new Map(strings.map((s) => [s.name, s]));
+  const typicals = new Map(strings.map((s) => [s.name, typicalOf(currents.get(s.id) ?? [])]));
   const told = results.map((m): JudgedUnit => {
     const string = byName.get(m.string)!;
     const units = currents.get(string.id) ?? [];
@@ -109,6 +103,7 @@ function judge({ rows, currents }: Read): Judgement {
         fitsOwn: m.outcome === 'here' || (m.outcome === 'cant_tell' && m.logOdds <= ODDS_NEEDED),
         otherString: m.otherString,
         otherStringId: m.otherString === null ? null : (byName.get(m.otherString)?.ref ?? null),
+        logOdds: m.logOdds,
         apartOwn: apartOwn?.share ?? null,
         apartOther: other && (apartFrom(unit, other, CURRENT_MIN)?.share ?? null),
         steps: apartOwn?.steps ?? 0,
@@ -117,40 +112,7 @@ function judge({ rows, currents }: Read): Judgement {
       },
     };
   });
-  const left = strings.filter((s) => !judged.includes(s));
-  const dark = left.flatMap((s) =>
-    s.slots.map((slot, unit): JudgedUnit => {
-      const words = membershipWords.noCurrent;
-      const none = new Float64Array(0);
-      return {
-        string: s.name,
-        unit,
-        outcome: 'cant_tell',
-        otherString: null,
-        logOdds: 0,
-        undecidedWith: [],
-        words,
-        unitCurrent: none,
-        own: none,
-        view: {
-          stringId: s.ref,
-          string: s.name,
-          position: slot.position,
-          serial: slot.serial,
-          outcome: 'cant_tell',
-          fitsOwn: true,
-          otherString: null,
-          otherStringId: null,
-          apartOwn: null,
-          apartOther: null,
-          steps: 0,
-          undecidedWith: [],
-          words,
-        },
-      };
-    }),
-  );
-  return { units: [...told, ...dark], typicals };
+  return { units: told, typicals };
 }
 
 const known = (values: Float64Array): (number | null)[] =>

@@ -1,4 +1,5 @@
-import { judgeMembership } from '../../../src/domain/output/membership';
+import { judgeMembership, type Membership } from '../../../src/domain/output/membership';
+import { chooseMoments, momentLength, type Heard } from '../../../src/domain/output/membership-moments';
 import { fitLoop, judgeLoop, type LoopSample } from '../../../src/domain/output/resistance';
 import { STEP_S, STEPS_A_DAY as A_DAY, type OutputRun } from './output-scenarios';
 import { sumAt, typicalAt, type Reports } from './output-series';
@@ -33,6 +34,23 @@ export const newCurrentScore = (): CurrentScore => ({
   remarks: [],
 });
 
+/** What is said of every unit after day `d`, from the moments that the service takes, too. */
+export function membershipsOf(run: OutputRun, reports: Reports, d: number): Membership[] {
+  const heard: Heard[] = [];
+  for (let q = d * A_DAY; q < (d + 1) * A_DAY; q++) {
+    const strings = reports.strings.filter((s) => s.current.some((c) => !Number.isNaN(c[q]!))).length;
+    if (strings > 0) heard.push({ atS: q * STEP_S, strings });
+  }
+  const { atS } = chooseMoments(heard, momentLength(STEP_S));
+  return judgeMembership(
+    reports.strings.map((s) => ({
+      name: s.name,
+      currents: s.current.map((c) => Float64Array.from(atS, (t) => c[t / STEP_S]!)),
+    })),
+    { accuracy: unitTypeOf(run.drawn.plan).currentAccuracy },
+  );
+}
+
 /** Days of a run on which membership is asked for: whatever the weather. */
 const MEMBERSHIP_DAYS = [0, 1];
 
@@ -40,13 +58,7 @@ export function scoreMembership(run: OutputRun, reports: Reports, score: Current
   const type = unitTypeOf(run.drawn.plan);
   if (type.kind === 'shutdown_only') return;
   for (const d of MEMBERSHIP_DAYS) {
-    const memberships = judgeMembership(
-      reports.strings.map((s) => ({
-        name: s.name,
-        currents: s.current.map((c) => c.subarray(d * A_DAY, (d + 1) * A_DAY)),
-      })),
-      { accuracy: type.currentAccuracy },
-    );
+    const memberships = membershipsOf(run, reports, d);
     const swapped = new Map(
       run.swaps.flatMap((s) => [
         [`${s.string}:${s.position - 1}`, s.otherString] as const,
