@@ -65,14 +65,24 @@ const Z_MAX = 3;
  * the others from being told: theirs are judged without it.
  */
 export function judgeMembership(strings: readonly MemberString[], options: MembershipOptions): Membership[] {
+  return [...membershipsByString(strings, options)].flat();
+}
+
+/** The same string by string, in their order, for whoever has something else to do in between. */
+export function* membershipsByString(
+  strings: readonly MemberString[],
+  options: MembershipOptions,
+): Generator<Membership[]> {
   const { currentMin = CURRENT_MIN } = options;
   const carrying = strings.filter((s) => typicalOf(s.currents).some((i) => i >= currentMin));
   const judged = carrying.length < 2 ? strings : carrying;
-  const accuracy = Math.max(ACCURACY_MIN, options.accuracy);
-  const told = new Map(judgeTogether(judged, accuracy, currentMin).map((of, i) => [judged[i]!, of]));
-  return strings.flatMap(
-    (s) => told.get(s) ?? s.currents.map((_, unit) => madeOf(s, unit)('cant_tell', membershipSaid.noCurrent)),
-  );
+  const judge = judgeTogether(judged, Math.max(ACCURACY_MIN, options.accuracy), currentMin);
+  for (const s of strings) {
+    const own = judged.indexOf(s);
+    yield own >= 0
+      ? judge(own)
+      : s.currents.map((_, unit) => madeOf(s, unit)('cant_tell', membershipSaid.noCurrent));
+  }
 }
 
 /** What is said of one unit, where nothing else is known of it. */
@@ -89,12 +99,12 @@ const madeOf =
     ...more,
   });
 
-/** Of each string, its units. */
+/** What judges the units of one of the strings, by its index. */
 function judgeTogether(
   strings: readonly MemberString[],
   accuracy: number,
   currentMin: number,
-): Membership[][] {
+): (own: number) => Membership[] {
   const steps = strings[0]?.currents[0]?.length ?? 0;
   const typical = strings.map((s) => typicalOf(s.currents));
   const chosen = chooseSamples(typical, steps, currentMin);
@@ -102,24 +112,44 @@ function judgeTogether(
   const relative = learnNoise(strings, logs, chosen);
   const noise = chosen.map((q) => Math.hypot(relative, RESOLUTION / Math.min(...typical.map((t) => t[q]!))));
 
-  return strings.map((s, own) =>
-    s.currents.map((current, unit): Membership => {
+  return (own) => {
+    const s = strings[own]!;
+    // most units report every sample: what parts their string from the others is the same for all of these
+    const apart = new Map<string, number[]>();
+    return s.currents.map((current, unit): Membership => {
       const usable = chosen.flatMap((q, k) => (current[q]! >= currentMin ? [k] : []));
       const made = madeOf(s, unit);
       if (usable.length < SAMPLES_MIN) return made('cant_tell', membershipSaid.tooFewSamples);
       const mine = usable.map((k) => Math.log(current[chosen[k]!]!));
+      const noiseHere = usable.map((k) => noise[k]!);
+      const spread = median(noiseHere);
       const likely = logs.map((log) =>
         likelihood(
           mine.map((x, j) => x - log[usable[j]!]!),
           accuracy,
-          usable.map((k) => noise[k]!),
+          noiseHere,
+          spread,
         ),
       );
+      const key = usable.join();
+      // how much likelihood a unit of this string would lose if it were held against another: what can be told at all
+      const separation =
+        apart.get(key) ??
+        logs.map(
+          (log) =>
+            -likelihood(
+              usable.map((k) => logs[own]![k]! - log[k]!),
+              accuracy,
+              noiseHere,
+              spread,
+            ),
+        );
+      apart.set(key, separation);
       const rivals = likely.map((l, i) => ({ i, odds: l - likely[own]! })).filter((r) => r.i !== own);
       rivals.sort((a, b) => b.odds - a.odds);
       const best = rivals[0];
       const undecidedWith = rivals
-        .filter(({ i }) => separation(logs[own]!, logs[i]!, usable, accuracy, noise) < ODDS_NEEDED)
+        .filter(({ i }) => separation[i]! < ODDS_NEEDED)
         .map(({ i }) => strings[i]!.name);
       const worstFit = -0.5 * INDEPENDENT * Z_MAX * Z_MAX * usable.length * 0.6;
       if (best !== undefined && best.odds > ODDS_NEEDED) {
@@ -147,8 +177,8 @@ function judgeTogether(
           undecidedWith,
         });
       return made('here', membershipSaid.here(s.name), { logOdds: best?.odds ?? 0 });
-    }),
-  );
+    });
+  };
 }
 
 /** Steps at which every string runs; of many, those where the strings differ most, spread over the time. */
@@ -188,30 +218,20 @@ function learnNoise(
 
 /**
  * ln likelihood of differences d = gain + noise, gain normal with `accuracy`: its mean against both, its scatter
- * against the noise, each deviation cut off.
+ * against the noise (`spread` is its median), each deviation cut off.
  */
-function likelihood(d: readonly number[], accuracy: number, noise: readonly number[]): number {
+function likelihood(
+  d: readonly number[],
+  accuracy: number,
+  noise: readonly number[],
+  spread: number,
+): number {
   const gain = median(d);
-  const gainVariance = accuracy ** 2 + (1.57 * median(noise) ** 2) / d.length; // variance of a median
+  const gainVariance = accuracy ** 2 + (1.57 * spread ** 2) / d.length; // variance of a median
   let scatter = 0;
   d.forEach((x, j) => {
     const z = Math.min(Z_MAX, Math.abs(x - gain) / noise[j]!);
     scatter += z * z;
   });
   return -0.5 * (gain ** 2 / gainVariance + INDEPENDENT * scatter);
-}
-
-/** How much likelihood a unit of `a` would lose if it were held against `b`: what can be told at all. */
-function separation(
-  a: readonly number[],
-  b: readonly number[],
-  usable: readonly number[],
-  accuracy: number,
-  noise: readonly number[],
-): number {
-  return -likelihood(
-    usable.map((k) => a[k]! - b[k]!),
-    accuracy,
-    usable.map((k) => noise[k]!),
-  );
 }

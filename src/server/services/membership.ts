@@ -1,4 +1,10 @@
-import { CURRENT_MIN, judgeMembership, ODDS_NEEDED, type Membership } from '../../domain/output/membership';
+import { setImmediate as turn } from 'node:timers/promises';
+import {
+  CURRENT_MIN,
+  membershipsByString,
+  ODDS_NEEDED,
+  type Membership,
+} from '../../domain/output/membership';
 import { apartFrom, counterpartOf, typicalOf } from '../../domain/output/membership-evidence';
 import { chooseMoments, momentLength } from '../../domain/output/membership-moments';
 import type { MembershipPage, MembershipSuspect, MembershipUnit } from '../../schemas/api/membership';
@@ -72,16 +78,12 @@ interface Judgement {
   typicals: ReadonlyMap<string, Float64Array>;
 }
 
-function judge({ rows, currents }: Read): Judgement {
+async function judge({ rows, currents }: Read): Promise<Judgement> {
   const strings = rows.strings.filter((s) => s.slots.length > 0);
   if (strings.length === 0) return { units: [], typicals: new Map() };
-  const results = judgeMembership(
-    strings.map((s) => ({ name: s.name, currents: currents.get(s.id) ?? [] })),
-    { accuracy: Math.max(...strings.map((s) => s.currentAccuracy)) },
-  );
   const byName = new Map(strings.map((s) => [s.name, s]));
   const typicals = new Map(strings.map((s) => [s.name, typicalOf(currents.get(s.id) ?? [])]));
-  const told = results.map((m): JudgedUnit => {
+  const judged = (m: Membership): JudgedUnit => {
     const string = byName.get(m.string)!;
     const units = currents.get(string.id) ?? [];
     const unit = units[m.unit]!;
@@ -111,7 +113,15 @@ function judge({ rows, currents }: Read): Judgement {
         words: m.words,
       },
     };
-  });
+  };
+  const told: JudgedUnit[] = [];
+  for (const units of membershipsByString(
+    strings.map((s) => ({ name: s.name, currents: currents.get(s.id) ?? [] })),
+    { accuracy: Math.max(...strings.map((s) => s.currentAccuracy)) },
+  )) {
+    told.push(...units.map(judged));
+    await turn(); // pages and loggers are served by the same process
+  }
   return { units: told, typicals };
 }
 
@@ -181,7 +191,7 @@ export async function membershipUnits(
   at: Date,
 ): Promise<{ site: VisibleSite; units: MembershipUnit[] }> {
   const site = found(await visibleSite(tx, siteRef), 'site');
-  const { units } = judge(await read(tx, site.id, hours, at));
+  const { units } = await judge(await read(tx, site.id, hours, at));
   return { site, units: units.map((j) => j.view) };
 }
 
@@ -193,7 +203,7 @@ export async function membershipAt(
   at: Date,
 ): Promise<{ units: MembershipUnit[]; suspects: MembershipSuspect[] }> {
   const data = await read(tx, siteId, hours, at);
-  const judgement = judge(data);
+  const judgement = await judge(data);
   return { units: judgement.units.map((j) => j.view), suspects: suspectsOf(judgement, data.steps) };
 }
 
@@ -209,7 +219,7 @@ export async function membershipPage(
 ): Promise<MembershipPage> {
   const site = found(await visibleSite(tx, siteRef), 'site');
   const data = await read(tx, site.id, hours, at);
-  const judgement = judge(data);
+  const judgement = await judge(data);
   const { units } = judgement;
   const count = (test: (j: JudgedUnit) => boolean) => units.filter(test).length;
   const [now] = await sitesNow(tx, at, [site.id]);
