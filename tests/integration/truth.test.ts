@@ -345,65 +345,58 @@ describe('after each fault, what Wakeline says is true or says that it can’t t
   });
 });
 
-describe(
-  'what takes longer to show',
-  { timeout: 150_000 },
-  () => {
-    plantsOf(isLonger);
+describe('what takes longer to show', { timeout: 150_000 }, () => {
+  plantsOf(isLonger);
 
-    it('snow: units without light are dark or silent, never stuck, and unconfirmed when shutdown is commanded', async () => {
-      const id = simulator.inject('Optimizing', { kind: 'snow' });
-      simulator.setInitiator('Optimizing', 'Initiator', true);
-      await pass(JUDGED_AFTER_S);
-      expect(simulator.truth('Optimizing').units.every((u) => u.mode === 'unpowered')).toBe(true);
-      expect(await settledDisagreements('Optimizing', () => false)).toEqual([]);
-      simulator.setInitiator('Optimizing', 'Initiator', false);
-      simulator.clear('Optimizing', id);
-      await pass(JUDGED_AFTER_S + 60);
-      expect(await settledDisagreements('Optimizing', () => false)).toEqual([]);
-    });
+  it('snow: units without light are dark or silent, never stuck, and unconfirmed when shutdown is commanded', async () => {
+    const id = simulator.inject('Optimizing', { kind: 'snow' });
+    simulator.setInitiator('Optimizing', 'Initiator', true);
+    await pass(JUDGED_AFTER_S);
+    expect(simulator.truth('Optimizing').units.every((u) => u.mode === 'unpowered')).toBe(true);
+    expect(await settledDisagreements('Optimizing', () => false)).toEqual([]);
+    simulator.setInitiator('Optimizing', 'Initiator', false);
+    simulator.clear('Optimizing', id);
+    await pass(JUDGED_AFTER_S + 60);
+    expect(await settledDisagreements('Optimizing', () => false)).toEqual([]);
+  });
 
-    it('a logger cut off in the midst of a shutdown: judged from what it replays, as if it had never been away', async () => {
-      const id = simulator.inject('Monitored', { kind: 'uplink_out', logger: logger('Monitored') });
-      const stuck = simulator.inject('Monitored', f({ kind: 'stuck', string: 'B2', position: 8 }));
-      await pass(60, true);
-      simulator.setInitiator('Monitored', 'Initiator', true);
-      await pass(120, true);
-      simulator.setInitiator('Monitored', 'Initiator', false);
-      await pass(JUDGED_AFTER_S, true);
-      simulator.clear('Monitored', id);
-      await pass(JUDGED_AFTER_S);
-      expect(
-        simulator
-          .truth('Monitored')
-          .units.filter((u) => u.mode === 'shutdown')
-          .map((u) => `${u.string}-${u.position}`),
-      ).toEqual(['B2-8']);
-      expect(await settledDisagreements('Monitored', () => false)).toEqual([]);
-      simulator.clear('Monitored', stuck);
-      await pass(JUDGED_AFTER_S);
-      expect(await settledDisagreements('Monitored', () => false)).toEqual([]);
-    });
+  it('a logger cut off in the midst of a shutdown: judged from what it replays, as if it had never been away', async () => {
+    const id = simulator.inject('Monitored', { kind: 'uplink_out', logger: logger('Monitored') });
+    const stuck = simulator.inject('Monitored', f({ kind: 'stuck', string: 'B2', position: 8 }));
+    await pass(60, true);
+    simulator.setInitiator('Monitored', 'Initiator', true);
+    await pass(120, true);
+    simulator.setInitiator('Monitored', 'Initiator', false);
+    await pass(JUDGED_AFTER_S, true);
+    simulator.clear('Monitored', id);
+    await pass(JUDGED_AFTER_S);
+    expect(
+      simulator
+        .truth('Monitored')
+        .units.filter((u) => u.mode === 'shutdown')
+        .map((u) => `${u.string}-${u.position}`),
+    ).toEqual(['B2-8']);
+    expect(await settledDisagreements('Monitored', () => false)).toEqual([]);
+    simulator.clear('Monitored', stuck);
+    await pass(JUDGED_AFTER_S);
+    expect(await settledDisagreements('Monitored', () => false)).toEqual([]);
+  });
 
-    it('shutdown-only strings: the input shows what their units can’t say', async () => {
-      const id = simulator.inject(
-        'Shutdown-only',
-        f({ kind: 'not_shutting_down', string: 'A1', position: 3 }),
-      );
-      simulator.setInitiator('Shutdown-only', 'Initiator', true);
-      await pass(30 + 120 + 6 * INTERVAL_S);
-      const findings = async () =>
-        [...(await concludedOf('Shutdown-only'))]
-          .filter(([, c]) => c.finding !== null)
-          .map(([n, c]) => [n, c.finding]);
-      const truth = simulator.truth('Shutdown-only');
-      const live = truth.strings.filter((s) => s.homeRun > 30 && s.name.startsWith('A')).map((s) => s.name);
-      expect(live).toEqual(['A1']);
-      expect(await findings()).toEqual([['A1', 'not_shutting_down']]);
-      simulator.setInitiator('Shutdown-only', 'Initiator', false);
-      simulator.clear('Shutdown-only', id);
-      await pass(JUDGED_AFTER_S + 4 * INTERVAL_S);
-      expect(await findings()).toEqual([]);
-    });
-  },
-);
+  it('shutdown-only strings: the input shows what their units can’t say', async () => {
+    const id = simulator.inject('Shutdown-only', f({ kind: 'not_shutting_down', string: 'A1', position: 3 }));
+    simulator.setInitiator('Shutdown-only', 'Initiator', true);
+    await pass(30 + 120 + 6 * INTERVAL_S);
+    const findings = async () =>
+      [...(await concludedOf('Shutdown-only'))]
+        .filter(([, c]) => c.finding !== null)
+        .map(([n, c]) => [n, c.finding]);
+    const truth = simulator.truth('Shutdown-only');
+    const live = truth.strings.filter((s) => s.homeRun > 30 && s.name.startsWith('A')).map((s) => s.name);
+    expect(live).toEqual(['A1']);
+    expect(await findings()).toEqual([['A1', 'not_shutting_down']]);
+    simulator.setInitiator('Shutdown-only', 'Initiator', false);
+    simulator.clear('Shutdown-only', id);
+    await pass(JUDGED_AFTER_S + 4 * INTERVAL_S);
+    expect(await findings()).toEqual([]);
+  });
+});
