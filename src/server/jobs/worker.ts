@@ -61,6 +61,8 @@ async function begin(): Promise<Working> {
     parsedCronItems: parseCronItems(CRON),
     concurrency: 2,
     maxPoolSize: 4,
+    // what became of a job is otherwise written by a promise that nobody waits for: without a database the process ended
+    preset: { worker: { completeJobBatchDelay: 0, failJobBatchDelay: 0 } },
     pollInterval: 5000,
     noHandleSignals: true,
     logger,
