@@ -75,6 +75,36 @@ describe('rules of a person', () => {
     expect(letter?.html).toContain('cid:drawing@wakeline');
   });
 
+  it('gather once at an hour that the day of a clock change does not have, or has twice', async () => {
+    await choose(manager, { timeZone: 'Europe/Oslo', digestAt: 150 }); // 02:30
+    const mine = async () => (await scene.letters()).filter((l) => l.to === 'manager@lowfield.example');
+    const happens = async (at: Date) => {
+      const detail = await scene.cause('stuck', `Cause of ${at.toISOString()}`);
+      await scene.happens({ kind: 'cause_opened', detail, at });
+      await tellAll(at);
+    };
+    const gather = (at: string) => Promise.all([1, 2].map(() => tellGathered(new Date(at))));
+
+    await happens(new Date('2026-03-28T12:00:00Z'));
+    await gather('2026-03-29T01:29:59Z');
+    expect(await mine()).toEqual([]);
+    await gather('2026-03-29T01:30:00Z'); // 03:30: 02:30 by the clock of the day before
+    expect(await mine()).toHaveLength(1);
+    await gather('2026-03-29T02:30:00Z');
+    expect(await mine()).toHaveLength(1);
+
+    await happens(new Date('2026-10-24T12:00:00Z'));
+    await gather('2026-10-25T00:29:59Z');
+    expect(await mine()).toHaveLength(1);
+    await gather('2026-10-25T00:30:00Z'); // 02:30 for the first time
+    expect(await mine()).toHaveLength(2);
+    await happens(new Date('2026-10-25T00:45:00Z'));
+    await gather('2026-10-25T01:30:00Z'); // and for the second
+    expect(await mine()).toHaveLength(2);
+    await gather('2026-10-26T01:30:00Z');
+    expect(await mine()).toHaveLength(3);
+  });
+
   it('hold letters in quiet hours, hazards excepted, and nothing leaves for sites that were not chosen', async () => {
     const night = new Date('2026-12-01T23:30:00Z');
     await choose(technician, {

@@ -127,6 +127,29 @@ export async function inputHistory(
   return rows;
 }
 
+/** The same of local days, as instants of their noon: means of their quarters, or what these come to (kWh). */
+export async function inputDays(
+  tx: Tx,
+  inputId: number,
+  window: Window,
+  timeZone: string,
+  quantity: Quantity,
+): Promise<HistoryPoint[]> {
+  const made = 'sum(v) / 4000';
+  const [value, low, high] = quantity === 'power' ? [made, made, made] : ['avg(v)', 'min(low)', 'max(high)'];
+  const { rows } = await tx.raw<{ rows: HistoryPoint[] }>(
+    `select extract(epoch from (day + time '12:00') at time zone :timeZone)::int8 as at, ${value}::float8 as value,
+            ${low}::float8 as low, ${high}::float8 as high, null as energy
+     from (select (at at time zone :timeZone)::date as day, avg(v) as v, min(v) as low, max(v) as high
+           from (select at, ${OF_INPUT[quantity]} as v from input_frame
+                 where input_id = :inputId and at >= :from and at < :to) f
+           where v is not null group by day, date_bin('15 min', at, timestamptz '2000-01-01 00:00Z')) q
+     group by day order by day`,
+    { inputId, timeZone, ...window },
+  );
+  return rows;
+}
+
 interface SiblingOptions {
   resolution: 'minute' | 'quarter' | 'day';
   stepS: number;

@@ -10,6 +10,7 @@ import { siblingsOf, stringFacts, type Sibling, type StringFacts } from '../quer
 import { importedDays, importedSteps, whereNothingElse } from '../queries/history-readings';
 import {
   dayBounds,
+  inputDays,
   inputHistory,
   planeLight,
   siblingHistory,
@@ -34,18 +35,10 @@ async function read(
   plan: Plan,
   quantity: HistoryQuantity,
 ): Promise<HistoryPoint[]> {
-  if (facts.kind === 'shutdown_only') {
-    const points = await inputHistory(
-      tx,
-      facts.inputId,
-      plan,
-      Math.min(DAY_S, Math.max(plan.stepS, 60)),
-      quantity,
-    );
-    if (plan.resolution !== 'day' || quantity !== 'power') return points;
-    const kWh = (watts: number) => (watts * 24) / 1000;
-    return points.map((p) => ({ ...p, value: kWh(p.value), low: kWh(p.value), high: kWh(p.value) }));
-  }
+  if (facts.kind === 'shutdown_only')
+    return plan.resolution === 'day'
+      ? inputDays(tx, facts.inputId, plan, facts.timeZone, quantity)
+      : inputHistory(tx, facts.inputId, plan, Math.max(plan.stepS, 60), quantity);
   if (plan.resolution === 'minute') return stringMinutes(tx, facts.id, plan, plan.stepS, quantity);
   if (plan.resolution === 'day')
     return quantity === 'current' ? [] : stringDays(tx, facts.id, plan, facts.timeZone, quantity);
