@@ -12,7 +12,7 @@ export const methodsMath = {
 export const notesConduct = {
   whatAMeterReading: 'What a meter reading means',
   everyWayInWhich: (tellFrom: number) =>
-    `Every way in which the string can be (all in shutdown, some passing, a module not mated, reversed, an open lead and more) foretells a voltage and its uncertainty. The reading weighs them by Bayes. From a chance of ${percent(tellFrom)} on an explanation is named as the finding; below that we say &ldquo;can’t tell&rdquo; and show what fits.`,
+    `Every way in which the string can be (all in shutdown, some passing, a module not mated, reversed, an open lead and more) foretells a voltage and its uncertainty. The reading weighs them by Bayes. From a chance of ${percent(tellFrom)} on an explanation is named as the finding; below that we say “can’t tell” and show what fits.`,
   chanceOfAnExplanation: 'chance of an explanation',
   voltageThatAnExplanation: 'voltage that an explanation foretells',
   unitsPassTheirModules: (nominal: number, min: number, max: number, asExpected: number) =>

@@ -1,4 +1,4 @@
-import { median } from './robust';
+import { median, medianInPlace } from './robust';
 
 /** How far a unit's current lies from a string's, drawn as evidence beside the judgement of membership. Amperes. */
 
@@ -14,9 +14,11 @@ export function typicalOf(currents: readonly Float64Array[], leftOut: number | n
   const others = currents.filter((_, i) => i !== leftOut);
   const steps = currents[0]?.length ?? 0;
   const typical = new Float64Array(steps).fill(NaN);
+  const values = new Float64Array(others.length);
   for (let q = 0; q < steps; q++) {
-    const values = others.flatMap((c) => (Number.isNaN(c[q]!) ? [] : [c[q]!]));
-    if (values.length > 0 && values.length * 2 >= others.length) typical[q] = median(values);
+    let known = 0;
+    for (const current of others) if (!Number.isNaN(current[q]!)) values[known++] = current[q]!;
+    if (known > 0 && known * 2 >= others.length) typical[q] = medianInPlace(values, known);
   }
   return typical;
 }

@@ -1,7 +1,16 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { cusum } from './cusum';
-import { mad, median, modifiedZ, outliersByModifiedZ, quantile, sigmaMad } from './robust';
+import {
+  mad,
+  median,
+  medianInPlace,
+  modifiedZ,
+  outliersByModifiedZ,
+  quantile,
+  ranked,
+  sigmaMad,
+} from './robust';
 import { theilSen } from './theil-sen';
 
 /** ms: many runs, on a busy machine. */
@@ -25,6 +34,28 @@ describe('robust statistics', () => {
         expect(quantile(values, 0.5)).toBeCloseTo(middle, 6);
         expect(quantile(values, 0) - Math.min(...values)).toBeCloseTo(0, 12);
         expect(quantile(values, 1) - Math.max(...values)).toBeCloseTo(0, 12);
+      }),
+    );
+  });
+
+  it('finds every rank as sorting does, among many of a kind too', () => {
+    const few = fc.array(fc.integer({ min: 0, max: 5 }), { minLength: 1, maxLength: 200 });
+    const many = fc.array(number, { minLength: 1, maxLength: 200 });
+    fc.assert(
+      fc.property(fc.oneof(few, many), fc.nat(), fc.nat({ max: 20 }), (values, any, more) => {
+        const ordered = [...values].sort((a, b) => a - b);
+        const rank = any % values.length;
+        // what lies behind the count is not looked at
+        const set = Float64Array.from([...values, ...Array.from({ length: more }, () => -1e9)]);
+        expect(ranked(set, rank, values.length)).toBeCloseTo(ordered[rank]!, 12);
+        expect(Math.max(...set.slice(0, rank + 1))).toBeCloseTo(ordered[rank]!, 12);
+        const signless = (list: Iterable<number>): number[] => Array.from(list, (v) => v + 0); // −0 is 0
+        expect(signless(set.slice(0, values.length).sort())).toEqual(signless(ordered));
+        const middle = values.length >> 1;
+        expect(medianInPlace(set, values.length)).toBeCloseTo(
+          values.length % 2 === 1 ? ordered[middle]! : (ordered[middle - 1]! + ordered[middle]!) / 2,
+          9,
+        );
       }),
     );
   });

@@ -1,4 +1,4 @@
-import { median } from './robust';
+import { median, medianInPlace, ranked } from './robust';
 
 export interface RobustLine {
   slope: number;
@@ -47,30 +47,31 @@ export function theilSen(x: readonly number[], y: readonly number[], confidence 
     throw new RangeError(`confidence must be between 0 and 1, but is ${confidence}`);
   }
   if (!x.every(Number.isFinite)) throw new RangeError('x must hold finite numbers only');
+  if (!y.every(Number.isFinite)) throw new RangeError('y must hold finite numbers only');
   const order = x.map((_, i) => i).sort((a, b) => x[a]! - x[b]!);
-  const slopes: number[] = [];
-  for (const lag of lagsFor(n)) {
+  const lags = lagsFor(n);
+  const slopes = new Float64Array(lags.reduce((sum, lag) => sum + n - lag, 0));
+  let pairs = 0;
+  for (const lag of lags) {
     for (let i = 0; i + lag < n; i += 1) {
       const from = order[i]!;
       const to = order[i + lag]!;
       const run = x[to]! - x[from]!;
-      if (run > 0) slopes.push((y[to]! - y[from]!) / run);
+      if (run > 0) slopes[pairs++] = (y[to]! - y[from]!) / run;
     }
   }
-  if (slopes.length === 0) throw new RangeError('x must hold at least two different values');
-  const slope = median(slopes);
+  if (pairs === 0) throw new RangeError('x must hold at least two different values');
+  const slope = medianInPlace(slopes, pairs);
   const intercept = median(y.map((value, i) => value - slope * x[i]!));
-  const ordered = Float64Array.from(slopes).sort();
   // Sen's count of slopes between the limits, as a share so that it also holds for a choice of pairs
   const spread = twoSidedZ(confidence) * Math.sqrt((n * (n - 1) * (2 * n + 5)) / 18);
   const share = Math.min(1, spread / ((n * (n - 1)) / 2));
-  const at = (part: number) =>
-    ordered[Math.min(ordered.length - 1, Math.max(0, Math.round(part * (ordered.length - 1))))]!;
+  const at = (part: number) => ranked(slopes, Math.round(part * (pairs - 1)), pairs);
   return {
     slope,
     intercept,
     slopeLow: at((1 - share) / 2),
     slopeHigh: at((1 + share) / 2),
-    pairs: slopes.length,
+    pairs,
   };
 }

@@ -1,3 +1,4 @@
+import { setImmediate as turn } from 'node:timers/promises';
 import type { FoundCause } from '../../domain/causes/changes';
 import { conductorsOhm, loopSamples } from '../../domain/output/loop-samples';
 import { median } from '../../domain/output/robust';
@@ -51,7 +52,11 @@ export async function fitLoops(
   const loops = series.strings.filter((n) => n.string.measures === 'output' || n.string.measures === 'both');
   if (loops.length < 1 || first === undefined || three.length < SUNNY_DAYS || !sunny[last]) return [];
   const samples = await readSamples(site, series, loops, first);
-  const fits = new Map(loops.map((n) => [n.string.id, fitLoop(samples.get(n.string.id) ?? [])]));
+  const fits = new Map<number, LoopFit | string>();
+  for (const n of loops) {
+    fits.set(n.string.id, fitLoop(samples.get(n.string.id) ?? []));
+    await turn(); // pages and loggers are served by the same process
+  }
   const fromDay = series.days[first] ?? '';
   const pasts = new Map(
     (await asIngest((tx) => pastFits(tx, site.id, fromDay))).map((p) => [p.stringId, p.fit]),
@@ -122,7 +127,11 @@ async function readSamples(
       ),
     );
     const byString = new Map<number, LoopRow[]>();
-    for (const r of rows) byString.set(r.stringId, [...(byString.get(r.stringId) ?? []), r]);
+    for (const r of rows) {
+      const own = byString.get(r.stringId);
+      if (own) own.push(r);
+      else byString.set(r.stringId, [r]);
+    }
     for (const n of some) {
       const others = (byInput.get(n.string.inputId) ?? []).filter((o) => o !== n);
       samples.set(
@@ -134,6 +143,7 @@ async function readSamples(
           series,
         ),
       );
+      await turn();
     }
   }
   return samples;

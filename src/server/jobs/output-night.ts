@@ -1,3 +1,4 @@
+import { setImmediate as turn } from 'node:timers/promises';
 import { DAILY_KINDS, type CauseKind } from '../../domain/causes/kinds';
 import type { FoundCause, FoundUnit, UnitSays } from '../../domain/causes/changes';
 import { judgeOutput, type OutputFinding } from '../../domain/output/low-output';
@@ -61,12 +62,20 @@ export async function judgeNight(siteId: number, day: string, at: Date): Promise
   );
   const usual = new Map(baselines.map((b) => [b.stringId, b.ratio]));
   const limits = thresholdsOf(site.thresholds);
-  const low = series.planes.flatMap((plane) => judgePlane(plane, series, usual, limits));
+  const low: LowJudged[] = [];
+  for (const plane of series.planes) {
+    low.push(...judgePlane(plane, series, usual, limits));
+    await turn();
+  }
   const loops = await fitLoops(site, series, low, limits.loopExcessOhm);
   const dayHours = ((series.boundsS[d + 1] ?? 0) - (series.boundsS[d] ?? 0)) / 3600;
   const dayEnd = new Date((series.boundsS[d + 1] ?? 0) * 1000);
   const membership = await asIngest((tx) => membershipAt(tx, siteId, dayHours, dayEnd));
-  const weak = series.strings.map((n) => ({ n, days: weakDays(n.string, series, n, limits) }));
+  const weak: { n: NightSeries['strings'][number]; days: WeakDay[] }[] = [];
+  for (const n of series.strings) {
+    weak.push({ n, days: weakDays(n.string, series, n, limits) });
+    await turn();
+  }
 
   return asIngest(async (tx) => {
     const locked = await lockCauses(tx, siteId);

@@ -1,3 +1,4 @@
+import { setImmediate as turn } from 'node:timers/promises';
 import { EXCLUDED, type PlaneSeries, type StringSeries } from '../../domain/output/plane-reference';
 import { median } from '../../domain/output/robust';
 import { solarPositionQuick } from '../../domain/photovoltaics/sun/position-quick';
@@ -62,6 +63,9 @@ export interface SeriesSite extends Place {
   reportIntervalS: number;
 }
 
+/** Rows after which others of the process have their turn. */
+const TAKEN_AT_ONCE = 1000;
+
 const nans = (n: number): Float64Array => new Float64Array(n).fill(NaN);
 
 /** The `count` local days of a site that end with `last`. */
@@ -95,7 +99,9 @@ export async function readNightSeries(
   const energy = new Map(night.map((n) => [n.string.id, nans(steps)]));
   const due = STEP_S / site.reportIntervalS;
   const least = Math.max(1, REPORTS_MIN * due);
+  let taken = 0;
   for (const row of await stringQuarters(tx, [...byId.keys()], span)) {
+    if (++taken % TAKEN_AT_ONCE === 0) await turn();
     const n = byId.get(row.stringId);
     const q = stepOf(row.atS);
     // arrays of another length are of another as-built
