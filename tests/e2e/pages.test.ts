@@ -212,6 +212,12 @@ const PAGES: readonly Shown[] = [
     file: 'commissioning/[site]/index.astro',
   },
   {
+    name: 'the same for who only reads',
+    role: 'analyst',
+    path: () => `/commissioning/${refOf(HALL)}`,
+    file: 'commissioning/[site]/index.astro',
+  },
+  {
     name: 'the as-built',
     role: 'technician',
     path: () => `/commissioning/${refOf(HALL)}/as-built`,

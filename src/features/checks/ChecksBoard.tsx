@@ -84,7 +84,9 @@ export function ChecksBoard({ initial, view: first, mayWrite, mayRecordEvidence 
             {sentence.strong && <strong>{sentence.strong}</strong>} {sentence.rest}
           </>
         }
-        actions={<ButtonLink href={paths.capture(site.id)}>{checksBoard.recordOnTheRoof}</ButtonLink>}
+        actions={
+          mayWrite && <ButtonLink href={paths.capture(site.id)}>{checksBoard.recordOnTheRoof}</ButtonLink>
+        }
       />
       <NotRead error={error} title={checksBoard.theChecksCouldNot} className="mb-4" />
       <div className="grid gap-5 xl:grid-cols-[200px_minmax(0,1fr)]">

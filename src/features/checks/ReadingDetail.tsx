@@ -48,7 +48,9 @@ export function ReadingDetail({ page, row, mayWrite, onChanged, onClose }: Props
         <Notice
           kind="empty"
           title={readingDetail.nothingWasReadHere}
-          action={<ButtonLink href={paths.capture(site.id)}>{readingDetail.recordOnTheRoof}</ButtonLink>}
+          action={
+            mayWrite && <ButtonLink href={paths.capture(site.id)}>{readingDetail.recordOnTheRoof}</ButtonLink>
+          }
         />
       )}
       <ul className="divide-y divide-rule-faint">

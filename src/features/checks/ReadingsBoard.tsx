@@ -154,7 +154,9 @@ export function ReadingsBoard({ initial, view: first, mayWrite }: Props) {
             {sentence.strong && <strong>{sentence.strong}</strong>} {sentence.rest}
           </>
         }
-        actions={<ButtonLink href={paths.capture(site.id)}>{readingsBoard.recordOnTheRoof}</ButtonLink>}
+        actions={
+          mayWrite && <ButtonLink href={paths.capture(site.id)}>{readingsBoard.recordOnTheRoof}</ButtonLink>
+        }
       />
       <NotRead error={error} title={readingsBoard.theReadingsCouldNot} className="mb-4" />
       <div className="grid gap-5 xl:grid-cols-[200px_minmax(0,1fr)]">
