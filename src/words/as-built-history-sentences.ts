@@ -1,6 +1,7 @@
 import { fieldOf, PART_KINDS, type PartKind } from '../domain/commissioning/as-built/parts';
 import { PART_WORDS } from './domain-as-built-parts';
 import type { HistoryItem } from '../schemas/api/as-built';
+import { capital } from './domain-counts';
 
 /** What an entry of the history says, in words. */
 
@@ -16,7 +17,6 @@ const partOfAction = (action: string): { kind: PartKind; done: string } | null =
   const kind = PART_KINDS.find((k) => action.startsWith(`${k}_`));
   return kind ? { kind, done: action.slice(kind.length + 1) } : null;
 };
-const capital = (text: string): string => text.charAt(0).toUpperCase() + text.slice(1);
 const textOf = (value: unknown): string => (typeof value === 'string' ? value : '');
 
 /** One sentence: what was done to what. */

@@ -69,7 +69,6 @@ export const caseBoardList = {
   noneIsOverdue: 'none is overdue',
   areYours: (mine: number) => `${mine} ${mine === 1 ? 'is' : 'are'} yours`,
   nobodyYet: (nobodys: number) => `${nobodys} ${nobodys === 1 ? 'has' : 'have'} nobody yet`,
-  partsAndAt: (parts: string, at: undefined | string) => `${parts} and ${at}`,
   oneCaseIsOpen: 'One case is open',
   casesAreOpen: (open: number) => `${countAtStart(open)} cases are open`,
 };

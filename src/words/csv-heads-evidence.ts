@@ -1,4 +1,5 @@
 import type { HistoryQuantity } from '../schemas/api/string';
+import { COLUMN_LABELS } from './domain-import';
 
 /** Heads of the tables in a case's evidence. */
 
@@ -13,17 +14,19 @@ export const evidenceReadingHeads = {
   quantity: (quantity: HistoryQuantity, unit: string) => `${QUANTITIES[quantity]} (${unit})`,
 };
 
+const { string, position, serial, unitType, moduleType, plane, inverter, input, zone, transmitters } =
+  COLUMN_LABELS;
 export const evidenceAsBuiltHeads = {
-  string: 'string',
-  position: 'position',
-  serial: 'serial',
-  unitType: 'unit type',
-  moduleType: 'module type',
-  plane: 'plane',
-  inverter: 'inverter',
-  input: 'input',
-  zone: 'zone',
-  transmitters: 'transmitters',
+  string,
+  position,
+  serial,
+  unitType,
+  moduleType,
+  plane,
+  inverter,
+  input,
+  zone,
+  transmitters,
   place: 'place',
 };
 

@@ -1,5 +1,5 @@
 import { listed } from '../drawings/numbers';
-import { counted } from './domain-counts';
+import { capital, counted } from './domain-counts';
 import { isOne } from './language';
 
 /** What is said when a closed case is looked at again. */
@@ -41,10 +41,7 @@ export const figuresSaid = {
 
 export const closedSaid = {
   /** Several things that are wrong, as one sentence. */
-  all: (parts: readonly string[]) => {
-    const text = listed(parts);
-    return `${text.charAt(0).toUpperCase()}${text.slice(1)}.`;
-  },
+  all: (parts: readonly string[]) => `${capital(listed(parts))}.`,
   closedJustNow: 'The case was closed a few minutes ago.',
   plannedWork: 'Planned work is going on.',
   tooLittleLight: 'There is too little light: dark units say nothing.',

@@ -1,3 +1,4 @@
+import { capital } from './domain-counts';
 /** What is wrong with a part's values, field by field, with the remedy. */
 export const partFaultSaid = {
   span: (min: string, max: string, unit: string) => `from ${min} to ${max}${unit ? ` ${unit}` : ''}`,
@@ -36,10 +37,7 @@ export const placementFaultSaid = {
   elsewhereUnseen: (serial: string, place: string) => `${serial} sits ${place}. Ask a manager.`,
   noSlot: (position: number) => `There is no position ${position} in this string.`,
   slotTwice: (slot: string) => `${slot} is named twice. Leave one of them out.`,
-  serialFault: (message: string, remedy: string) => {
-    const words = `${message}. ${remedy}`;
-    return words.charAt(0).toUpperCase() + words.slice(1);
-  },
+  serialFault: (message: string, remedy: string) => capital(`${message}. ${remedy}`),
   serialTwice: (serial: string, slot: string) =>
     `${serial} is given for ${slot} too. A unit sits in one slot.`,
 };

@@ -2,7 +2,7 @@ import type { Mode } from '../domain/causes/candidates';
 import type { CauseVerdict, PartKind } from '../domain/causes/site';
 import type { FindingEvidence } from '../domain/verdicts/memory';
 import { countAtStart } from '../drawings/numbers';
-import { counted } from './domain-counts';
+import { capital, counted, listedUpTo } from './domain-counts';
 import { isOne } from './language';
 
 /** What causes say of themselves: headings, what was compared, what else it could be. */
@@ -21,17 +21,12 @@ const KINDS: Record<PartKind, string> = {
 /** A part once by kind and name: names often begin with their kind ("Gateway 3, laundry"). */
 const named = (kind: PartKind, name: string): string =>
   name.trim().toLowerCase().startsWith(KINDS[kind]) ? name.trim() : `${KINDS[kind]} ${name.trim()}`;
-const first = (words: string): string => words.charAt(0).toUpperCase() + words.slice(1);
 /** The same where a sentence begins with it. */
-const Named = (kind: PartKind, name: string): string => first(named(kind, name));
+const Named = (kind: PartKind, name: string): string => capital(named(kind, name));
 
 const units = (n: number): string => counted(n, 'unit');
 const strings = (n: number): string => counted(n, 'string');
 const inputs = (n: number): string => counted(n, 'input');
-const listed = (names: readonly string[]): string =>
-  names.length <= 3
-    ? names.join(names.length === 2 ? ' and ' : ', ')
-    : `${names.slice(0, 3).join(', ')} and ${names.length - 3} more`;
 
 const DOES: Record<CauseVerdict, readonly [one: string, many: string]> = {
   stuck: ['is stuck in shutdown', 'are stuck in shutdown'],
@@ -91,7 +86,7 @@ export const causeHeadlines = {
   transmitterSends: (name: string, verdict: CauseVerdict, n: number) =>
     `${Named('transmitter', name)} seems to keep sending: ${units(n)} ${does(verdict, n)}`,
   hearANeighbour: (name: string, verdict: CauseVerdict, n: number, of: readonly string[]) =>
-    `${units(n)} of ${listed(of)} seem to hear ${named('transmitter', name)} and ${does(verdict, 2)}`,
+    `${units(n)} of ${listedUpTo(3, of)} seem to hear ${named('transmitter', name)} and ${does(verdict, 2)}`,
   gatewaySilent: (name: string, n: number) =>
     `${Named('gateway', name)} has fallen silent, and ${units(n)} with it`,
   throughGateway: (name: string, verdict: CauseVerdict, n: number) =>
@@ -122,7 +117,7 @@ export const causeEvidence = {
   itAlone: (neighbours: number, string: string, verdict: CauseVerdict) =>
     `Its ${counted(neighbours, 'neighbour')} in ${string} ${isOne(neighbours) ? 'does' : 'do'} as expected; it alone is ${SHOWN[verdict]}.`,
   ofThoseThatShare: (shown: number, of: number, verdict: CauseVerdict, ofStrings: readonly string[]) =>
-    `${shown} of ${of} units that share it are ${SHOWN[verdict]}, in ${listed(ofStrings)}.`,
+    `${shown} of ${of} units that share it are ${SHOWN[verdict]}, in ${listedUpTo(3, ofStrings)}.`,
   voltage: (input: string, string: string, e: FindingEvidence) => {
     const where = e.scope === 'input' ? `${input}, which strings share,` : `The input of ${string}`;
     const expected = e.expectedV === null ? '' : `, ${e.expectedV.toFixed(1)} V expected`;

@@ -1,12 +1,7 @@
-import { listed } from '../drawings/numbers';
-import { counted, figure } from './domain-counts';
+import { counted, figure, listedUpTo } from './domain-counts';
 import { isOne } from './language';
 
-/** "B1, B2 and 3 more". */
-const named = (names: readonly string[], most = 4): string =>
-  names.length <= most + 1
-    ? listed(names)
-    : `${names.slice(0, most).join(', ')} and ${names.length - most} more`;
+const named = (names: readonly string[], most = 4): string => listedUpTo(most, names);
 
 /** What stands of each step, in few words, and what blocks it. */
 export const commissioningStepSaid = {

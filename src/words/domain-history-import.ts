@@ -1,4 +1,5 @@
 import type { PlaceColumn, Quantity, Subject } from '../domain/history-import/layout';
+import { listedUpTo } from './domain-counts';
 
 /** What a file of earlier readings holds, and why a cell, a row or the whole of it can't be read. */
 
@@ -45,10 +46,8 @@ export const layoutSaid = {
 };
 
 type Named = 'string' | 'inverter';
-const listed = (names: readonly string[]): string => {
-  const shown = names.slice(0, 6).join(', ');
-  return names.length === 0 ? 'none' : names.length > 6 ? `${shown} and ${names.length - 6} more` : shown;
-};
+const listed = (names: readonly (string | number)[]): string =>
+  names.length === 0 ? 'none' : listedUpTo(6, names);
 
 /** What is wrong with a cell. */
 export const historyFaults = {
@@ -71,7 +70,7 @@ export const historyRemedies = {
   lookAtYear: 'Look at the year.',
   isMeant: (near: string) => `Is ${near} meant? Names are those of the as-built.`,
   asBuiltHas: (names: readonly string[]) => `The as-built has ${listed(names)}.`,
-  inputs: (inputs: readonly number[]) => `It has ${listed(inputs.map(String))}.`,
+  inputs: (inputs: readonly number[]) => `It has ${listed(inputs)}.`,
   positions: (slots: number) => `Its positions go from 1 to ${slots}.`,
   writeANumber: 'Write a number, or leave the cell empty.',
   sayTheMark: 'Say above which mark stands before decimals.',

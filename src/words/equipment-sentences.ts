@@ -1,6 +1,7 @@
 import type { EquipmentFamily } from '../domain/equipment/families';
 import { counted, countAtStart } from '../drawings/numbers';
 import type { Catalogue, CatalogueItem } from '../schemas/api/equipment';
+import { capital } from './domain-counts';
 
 export const FAMILY_LABELS: Record<EquipmentFamily, string> = {
   modules: 'Modules',
@@ -59,5 +60,5 @@ export function listFinding(catalogue: Catalogue): { heading: string; sentence: 
 /** What saving a change of a type touches; null where nothing rests on it. */
 export function touches(item: CatalogueItem): string | null {
   if (item.strings === 0 && item.types === 0) return null;
-  return `${usedWords(item).replace(/^./, (c) => c.toUpperCase())} ${item.strings + item.types === 1 ? 'rests' : 'rest'} on this type: what is expected there, and the design checks, change when you save. The change is recorded with its before and after.`;
+  return `${capital(usedWords(item))} ${item.strings + item.types === 1 ? 'rests' : 'rest'} on this type: what is expected there, and the design checks, change when you save. The change is recorded with its before and after.`;
 }

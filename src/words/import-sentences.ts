@@ -3,7 +3,7 @@ import type { Change } from '../domain/commissioning/import/plan';
 import type { CellFault, FaultCode } from '../domain/commissioning/import/table';
 import type { ChangeKind, ImportOutcome } from '../schemas/api/import';
 import type { ImportStep } from '../schemas/lists-and-limits';
-import { counted } from './domain-counts';
+import { capital, counted } from './domain-counts';
 import { COLUMN_LABELS } from './domain-import';
 
 export const CHANGE_NAMES: Record<ChangeKind, (n: number) => string> = {
@@ -140,6 +140,5 @@ export function summary(outcome: ImportOutcome): string {
     CHANGE_NAMES[kind](n),
   );
   if (outcome.unchanged > 0) parts.push(`${counted(outcome.unchanged, 'row')} as before`);
-  const text = parts.join(', ');
-  return text.charAt(0).toUpperCase() + text.slice(1);
+  return capital(parts.join(', '));
 }

@@ -1,11 +1,12 @@
 import { DECISIVE_METHOD } from './domain-membership';
 import { isOne } from './language';
+import { capital } from './domain-counts';
 
 /** What a night's judgement found, as causes say it. Names of parts are stored with their cause. */
 
 const percent = (share: number): string => `${Math.round(100 * share)} %`;
 const names = (strings: readonly string[]): string => strings.join(' and ');
-const sentence = (clause: string): string => `${clause.charAt(0).toUpperCase()}${clause.slice(1)}.`;
+const sentence = (clause: string): string => `${capital(clause)}.`;
 
 export const nightParts = {
   strings: names,

@@ -1,4 +1,4 @@
-import { counted } from './domain-counts';
+import { counted, listedUpTo } from './domain-counts';
 import { isOne } from './language';
 
 export const acceptGapRefusals = {
@@ -30,7 +30,7 @@ export const hangingRecords = {
   day: (n: number) => counted(n, 'day of production', 'days of production'),
 };
 const named = (names: readonly string[], one: string, many: string): string =>
-  `${isOne(names.length) ? one : many} ${names.length <= 4 ? names.join(', ') : `${names.slice(0, 3).join(', ')} and ${names.length - 3} more`}`;
+  `${isOne(names.length) ? one : many} ${listedUpTo(3, names)}`;
 /** What hangs on a part of a site and goes first, by name. */
 export const hangingParts = {
   string: (names: readonly string[]) => named(names, 'string', 'strings'),

@@ -11,6 +11,7 @@ import { Acknowledge } from './Acknowledge';
 import { placesInWords, placesOf, positionsInWords } from './places';
 import { alternativesInWords, isHazard, treatAsLive } from './words';
 import { causeSheet } from '../../words/shared-causes';
+import { capital } from '../../words/domain-counts';
 
 interface Props {
   cause: CauseNow;
@@ -40,7 +41,7 @@ function Where({ cause, begins }: { cause: CauseNow; begins: boolean }) {
   const places = placesOf(cause.units);
   if (places.length === 0 || places.length > 3) {
     const words = placesInWords(cause.units);
-    return <>{begins ? words.charAt(0).toUpperCase() + words.slice(1) : words}</>;
+    return <>{begins ? capital(words) : words}</>;
   }
   return (
     <>

@@ -5,6 +5,7 @@ import { number, percent, volts } from '../../drawings/numbers';
 import { chosen, type Place, type ReadingForm } from './form';
 import { SHEET_KEYS, SHEETS } from './sheets';
 import { sharedReadingsWords } from '../../words/shared-readings';
+import { capital } from '../../words/domain-counts';
 
 /** An answer in plain words: what a person on a roof reads or is read. */
 
@@ -185,7 +186,7 @@ export function cautionParts(caution: string): { strong: string; rest: string } 
   const at = caution.indexOf(': ');
   if (at < 0) return { strong: caution, rest: '' };
   const rest = caution.slice(at + 2);
-  return { strong: `${caution.slice(0, at)}.`, rest: rest.charAt(0).toUpperCase() + rest.slice(1) };
+  return { strong: `${caution.slice(0, at)}.`, rest: capital(rest) };
 }
 
 /** What is read aloud: the answer first, the cautions always. */

@@ -1,6 +1,7 @@
 import { listed } from '../../drawings/numbers';
 import type { InstallationStatus } from '../../schemas/api/status';
 import { statusFindingWords } from '../../words/status';
+import { capital } from '../../words/domain-counts';
 
 /** Roll-ups close a quarter some minutes after its end; this much behind, something stands still. Seconds. */
 const ROLL_UP_LATE_S = 40 * 60;
@@ -32,8 +33,7 @@ export function statusFinding(status: InstallationStatus): { heading: string; se
   ].filter(Boolean);
   const counts = statusFindingWords.loggersOfLoggersConnected(loggers.length, away.length, refused);
   if (faults.length > 0) {
-    const text = listed(faults);
-    return { heading: `${text.charAt(0).toUpperCase()}${text.slice(1)}`, sentence: counts };
+    return { heading: capital(listed(faults)), sentence: counts };
   }
   if (away.length > 0)
     return {

@@ -15,6 +15,7 @@ import { changedKeys, formOf, readForm, serverFaults, type Faults, type Form } f
 import { PartFields } from './PartFields';
 import { addPart, asBuiltKey, changePart, readAsBuilt, removePart } from './queries';
 import { partDialog } from '../../words/as-built';
+import { capital } from '../../words/domain-counts';
 
 /** Which form is open: a new part, or one to edit. */
 export interface Editing {
@@ -164,10 +165,7 @@ export function PartDialog({ built, editing, timeZones, onClose, onSaved }: Prop
   const clash =
     save.error instanceof ApiError && save.error.status === 409 && id !== null && save.error.current !== null;
   const error = save.error ?? remove.error ?? rebase.error;
-  const title =
-    id === null
-      ? partDialog.addA(words.a)
-      : `${words.one.charAt(0).toUpperCase()}${words.one.slice(1)} ${label}`;
+  const title = id === null ? partDialog.addA(words.a) : `${capital(words.one)} ${label}`;
   const askReason = operating || faults.reason !== undefined || asking;
 
   return (

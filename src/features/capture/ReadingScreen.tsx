@@ -39,8 +39,7 @@ import {
   type CaptureView,
 } from './view';
 import { readingScreen } from '../../words/capture';
-
-const capital = (words: string): string => words.charAt(0).toUpperCase() + words.slice(1);
+import { capital } from '../../words/domain-counts';
 
 interface Moment {
   stage: ReadingStage;

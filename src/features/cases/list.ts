@@ -2,6 +2,8 @@ import { CASE_STATES, isClosed } from '../../domain/cases/cases';
 import { CASE_KIND_WORDS } from '../../words/domain-cases';
 import type { CaseItem, CasesPage, CasesView } from '../../schemas/api/cases';
 import { caseBoardList } from '../../words/case-board';
+import { listed } from '../../drawings/numbers';
+import { capital } from '../../words/domain-counts';
 
 export const CASES_DEFAULTS: CasesView = {
   look: 'board',
@@ -85,12 +87,8 @@ export function casesFinding({ cases, me }: CasesPage): { finding: string; sente
     mine > 0 ? caseBoardList.areYours(mine) : '',
     nobodys > 0 ? caseBoardList.nobodyYet(nobodys) : '',
   ].filter(Boolean);
-  const list =
-    parts.length > 1
-      ? caseBoardList.partsAndAt(parts.slice(0, -1).join(', '), parts.at(-1))
-      : (parts[0] ?? '');
   return {
     finding: open.length === 1 ? caseBoardList.oneCaseIsOpen : caseBoardList.casesAreOpen(open.length),
-    sentence: `${list[0]?.toUpperCase() ?? ''}${list.slice(1)}.`,
+    sentence: `${capital(listed(parts))}.`,
   };
 }

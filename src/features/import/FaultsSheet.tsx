@@ -11,6 +11,7 @@ import { harmlessCell } from '../../schemas/csv-cell';
 import { cellKey } from './desk';
 import { FAULT_NAMES } from '../../words/import-sentences';
 import { faultsSheet } from '../../words/import';
+import { capital } from '../../words/domain-counts';
 
 interface Props {
   faults: readonly CellFault[];
@@ -151,7 +152,7 @@ function FaultRow({ fault, text, edited, onEdit }: RowProps) {
       </div>
       <div className="text-[15px] leading-5">
         <p className={fault.weight === 'fault' ? 'font-medium text-rust-ink' : 'font-medium'}>
-          {sentence(fault.message)}
+          {`${capital(fault.message)}.`}
           {edited && <span className="font-normal text-ink-2">{faultsSheet.asYouWroteIt}</span>}
         </p>
         <p className="text-ink-2">{fault.remedy}</p>
@@ -171,8 +172,6 @@ function FaultRow({ fault, text, edited, onEdit }: RowProps) {
     </li>
   );
 }
-
-const sentence = (text: string): string => `${text.charAt(0).toUpperCase()}${text.slice(1)}.`;
 
 /** The faults for whoever mends the file elsewhere; made here, for the server does not have the file. */
 function saveCsv(faults: readonly CellFault[], texts: Readonly<Record<string, string>>): void {

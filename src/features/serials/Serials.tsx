@@ -15,6 +15,7 @@ import { Settings, useSettings } from './Settings';
 import { beep, tremble } from './signal';
 import { useSerials } from './use-serials';
 import { serials } from '../../words/serials';
+import { capital } from '../../words/domain-counts';
 
 interface Props {
   initial: AsBuilt;
@@ -142,7 +143,7 @@ export function Serials({ initial, person, string: first }: Props) {
         finding={<>{serials.positionOf(string.name, position, string.slots.length)}</>}
         sentence={
           <>
-            {slot?.roofPlace ? <strong>{upper(slot.roofPlace)}.</strong> : null} {progressWords(string)}.
+            {slot?.roofPlace ? <strong>{capital(slot.roofPlace)}.</strong> : null} {progressWords(string)}.
           </>
         }
       />
@@ -263,8 +264,6 @@ export function Serials({ initial, person, string: first }: Props) {
   );
 }
 
-const upper = (text: string): string => text.charAt(0).toUpperCase() + text.slice(1);
-
 function Crumbs({
   initial,
   finding,
@@ -298,7 +297,7 @@ function Question({ judged, onTake, onKeep }: QuestionProps) {
   if (judged.kind === 'fault')
     return (
       <div className="border border-rust bg-rust-wash p-3 text-[15px] text-rust-ink">
-        <p className="font-medium">{upper(judged.message)}.</p>
+        <p className="font-medium">{capital(judged.message)}.</p>
         <p>{judged.remedy}</p>
         {judged.suggestion !== null && (
           <Button

@@ -3,6 +3,7 @@ import type { StringPage } from '../../schemas/api/string';
 import type { SlotNow } from '../../schemas/api/now';
 import { modulesMissing, positionsInWords, unitsWhere, type Finding } from '../../words/strings-sentences';
 import { stringsAdvice } from '../../words/strings';
+import { capital } from '../../words/domain-counts';
 
 /** What the readings say, what to do next, and the caution that stands beside it. */
 export interface Explanation {
@@ -19,8 +20,6 @@ export interface Readings {
   /** Where a limit or a grace comes from. */
   source: string;
 }
-
-const upper = (text: string): string => text.charAt(0).toUpperCase() + text.slice(1);
 
 function evidenceText(held: readonly SlotNow[], page: StringPage): string {
   const many = held.length > 1;
@@ -52,7 +51,7 @@ export function readingsOf(page: StringPage, finding: Finding): Readings {
       const held = unitsWhere(string, (s) => s.verdict === 'stuck');
       return {
         main: {
-          title: stringsAdvice.heldInShutdown(upper(positionsInWords(held))),
+          title: stringsAdvice.heldInShutdown(capital(positionsInWords(held))),
           confidence: confidenceOf(held),
           text: evidenceText(held, page),
           tone: 'rust',
@@ -68,7 +67,7 @@ export function readingsOf(page: StringPage, finding: Finding): Readings {
       if (live.length > 0)
         return {
           main: {
-            title: stringsAdvice.stillPassing(upper(positionsInWords(live))),
+            title: stringsAdvice.stillPassing(capital(positionsInWords(live))),
             confidence: confidenceOf(live),
             text: stringsAdvice.shutdownIsCommandedIts,
             tone: 'crimson',
@@ -79,7 +78,7 @@ export function readingsOf(page: StringPage, finding: Finding): Readings {
       const f = evidence.finding;
       return {
         main: {
-          title: string.finding ? upper(string.finding.words) : finding.heading,
+          title: string.finding ? capital(string.finding.words) : finding.heading,
           confidence: f?.confidence ?? null,
           text: f
             ? stringsAdvice.measuredBesideExpected(f.measuredV, f.expectedV, f.thresholdV, f.scope)
@@ -107,7 +106,7 @@ export function readingsOf(page: StringPage, finding: Finding): Readings {
       const units = unitsWhere(string, (s) => s.verdict === 'flapping' || s.verdict === 'late');
       return {
         main: {
-          title: upper(positionsInWords(units)),
+          title: capital(positionsInWords(units)),
           confidence: confidenceOf(units),
           text: finding.heading,
           tone: 'rust',
