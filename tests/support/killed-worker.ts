@@ -6,6 +6,7 @@ import { expect } from 'vitest';
 import { JOBS, type TaskName } from '../../src/server/jobs/tasks';
 import type { TestDatabase } from './database';
 import { until } from './ingest';
+import { programOf } from './program';
 
 export interface JobToKill {
   task: TaskName;
@@ -36,7 +37,7 @@ export class KilledWorker {
   ) {}
 
   async start(): Promise<void> {
-    const child = spawn(process.execPath, ['--import', 'tsx', 'tests/support/job-process.ts'], {
+    const child = spawn(process.execPath, [await programOf('job-process')], {
       env: { ...process.env, ...this.db.env, ...this.env, LOG_LEVEL: 'silent' },
       stdio: ['pipe', 'pipe', 'inherit'],
     });
