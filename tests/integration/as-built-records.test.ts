@@ -51,7 +51,7 @@ describe('deleting', () => {
   it('says what a part is in use by', async () => {
     const b = await built();
     expect((await remove('plane', b.planes[0]!.id)).problem.detail).toContain(
-      'in use by strings A1, A2, A3, A4',
+      'in use by strings A1, A2, A3 and A4.',
     );
     expect((await remove('zone', b.zones[0]!.id)).status).toBe(409);
     expect((await remove('initiator', b.initiators[0]!.id)).problem.detail).toContain('zone Whole site');

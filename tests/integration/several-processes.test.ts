@@ -10,6 +10,7 @@ import { testDatabase, type TestDatabase } from '../support/database';
 import { SECRET, testFleet, type TestFleet } from '../support/fleet';
 import { frameOf, nowS, TestLogger } from '../support/ingest';
 import { noonEverywhere } from '../support/noon';
+import { programOf } from '../support/program';
 import { roundRobin, type RoundRobin } from '../support/round-robin';
 import { Watcher } from '../torture/watcher';
 
@@ -28,7 +29,7 @@ const loggers: KeepingLogger[] = [];
 const watchers: Watcher[] = [];
 
 async function processOf(roles: string): Promise<{ child: ChildProcess; port: number }> {
-  const child = spawn(process.execPath, ['--import', 'tsx', 'tests/support/role-process.ts'], {
+  const child = spawn(process.execPath, [await programOf('role-process')], {
     env: { ...process.env, ...db.env, WAKELINE_ROLES: roles, LOG_LEVEL: 'silent' },
     stdio: ['pipe', 'pipe', 'inherit'],
   });
