@@ -2,7 +2,7 @@ import process from 'node:process';
 import pg from 'pg';
 import type { Page } from 'playwright-core';
 import { closePools } from '../../src/server/db/pools';
-import { hydrated, signedInContext, startBrowser } from '../support/browser';
+import { hydrated, OPTIMIZING, signedInContext, startBrowser } from '../support/browser';
 import type { TestDatabase } from '../support/database';
 import { testFleet } from '../support/fleet';
 import { pageWeights } from '../support/page-weight';
@@ -92,7 +92,7 @@ async function inTheBrowser(): Promise<void> {
     [string.id, school.id, YEAR_DAYS],
   );
   const site = await startSite({ env } as unknown as TestDatabase, { WAKELINE_ROLES: 'web' });
-  const browser = await startBrowser();
+  const browser = await startBrowser(OPTIMIZING);
   try {
     const sitePath = `/sites/${school.ref}`;
     const stringPath = `${sitePath}/strings/${string.ref}`;

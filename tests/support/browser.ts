@@ -17,7 +17,11 @@ const FLAGS = [
   '--disable-background-networking',
   '--disable-component-update',
   '--disable-sync',
+  // pages of a test are short: what optimizing their scripts costs never comes back
+  '--js-flags=--no-opt,--no-maglev',
 ];
+/** Where it is measured what pages cost: scripts are optimized as they are for people. */
+export const OPTIMIZING: readonly string[] = ['--js-flags='];
 
 /** Debian's Chromium, without a window; `more` flags where a test needs a camera, say. The caller closes it. */
 export const startBrowser = (more: readonly string[] = []): Promise<Browser> =>
