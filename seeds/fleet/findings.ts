@@ -1,6 +1,6 @@
 import type { Knex } from 'knex';
 import type { OutputFinding } from '../../src/domain/output/low-output';
-import { CopyInto, instant } from '../history/copy';
+import { copyMade, instant } from '../history/copy';
 import { dayText, isWeak } from './days';
 import type { Seat } from './readings';
 
@@ -21,26 +21,8 @@ const soundFinding: OutputFinding = {
   confidence: 0.9,
 };
 
-/** What the last nights found of every string's output, with the causes of the weak ones; events as they gather. */
-export async function writeFindings(
-  tx: Knex.Transaction,
-  seats: readonly Seat[],
-  localTodayS: number,
-  nowS: number,
-): Promise<void> {
-  const copy = await CopyInto.open(tx, 'output_day', [
-    'string_id',
-    'site_id',
-    'day',
-    'judged_at',
-    'outcome',
-    'method',
-    'ratio',
-    'z',
-    'loss_wh',
-    'expected_wh',
-    'finding',
-  ]);
+/** What the last nights found of every string. */
+function* nightRows(seats: readonly Seat[], localTodayS: number): Generator<string> {
   for (let back = NIGHTS; back >= 1; back--) {
     const dayS = localTodayS - back * DAY_S;
     const days = [5, 4, 3, 2, 1].map((n) => dayText(dayS - (n - 1) * DAY_S));
@@ -58,13 +40,32 @@ export async function writeFindings(
       confidence: 0.85,
     })}`;
     for (const seat of seats) {
-      copy.write(
-        `${seat.of.id}\t${seat.of.siteId}\t${dayText(dayS)}\t${instant(dayS + DAY_S)}\t${isWeak(seat) ? weak : sound}`,
-      );
-      await copy.breathe();
+      yield `${seat.of.id}\t${seat.of.siteId}\t${dayText(dayS)}\t${instant(dayS + DAY_S)}\t${isWeak(seat) ? weak : sound}`;
     }
   }
-  await copy.close();
+}
+
+/** What the last nights found of every string's output, with the causes of the weak ones; events as they gather. */
+export async function writeFindings(
+  tx: Knex.Transaction,
+  seats: readonly Seat[],
+  localTodayS: number,
+  nowS: number,
+): Promise<void> {
+  const columns = [
+    'string_id',
+    'site_id',
+    'day',
+    'judged_at',
+    'outcome',
+    'method',
+    'ratio',
+    'z',
+    'loss_wh',
+    'expected_wh',
+    'finding',
+  ];
+  await copyMade(tx, 'output_day', columns, nightRows(seats, localTodayS));
   await tx.raw(
     `insert into output_night (site_id, day, judged_at, strings, cant_tell, low)
      select site_id, day, max(judged_at), count(*), 0, count(*) filter (where outcome = 'low') from output_day group by 1, 2`,

@@ -3,7 +3,7 @@ import { codeOf, UNIT_STATES, VERDICTS } from '../../src/domain/verdicts/codes';
 import { newMemory, SEEN_PASSING, SEEN_SHUTDOWN } from '../../src/domain/verdicts/memory';
 import { frameAt, lightAt, loadString, type LoadShape, type LoadString } from '../../simulator/load/frames';
 import type { Frame } from '../../src/schemas/ingest';
-import { arrayField, CopyInto, instant } from '../history/copy';
+import { arrayField, copyMade, instant } from '../history/copy';
 import { QUARTER_COLUMNS, QUARTER_S } from '../history/quarters';
 import { UNITS_A_STRING, type FleetString } from './plant';
 
@@ -53,15 +53,29 @@ function kept(make: (frame: Frame) => string, shape: LoadShape): (load: LoadStri
   };
 }
 
+/** A row of each string at each lit step before `endS`: when, which string, and what `text` says of it. */
+function* litRows(
+  seats: readonly Seat[],
+  shape: LoadShape,
+  text: (load: Seat['load'], atS: number) => string,
+  steps: { fromS: number; endS: number; stepS: number },
+): Generator<string> {
+  const { fromS, endS, stepS } = steps;
+  for (let atS = Math.ceil(fromS / stepS) * stepS; atS < endS; atS += stepS) {
+    if (lightAt(shape, atS) <= 0.02) continue;
+    const at = instant(atS);
+    for (const { of, load } of seats) yield `${at}\t${of.id}\t${text(load, atS)}`;
+  }
+}
+
 /** Frames of each lit minute from `fromS` until `untilS`, string by string in order of time within an hour. */
-export async function writeFrames(
+export function writeFrames(
   tx: Knex.Transaction,
   seats: readonly Seat[],
   shape: LoadShape,
   fromS: number,
   untilS: number,
 ): Promise<number> {
-  const copy = await CopyInto.open(tx, 'string_frame', FRAME_COLUMNS);
   const text = kept(
     (f) =>
       [
@@ -72,27 +86,18 @@ export async function writeFrames(
       ].join('\t'),
     shape,
   );
-  for (let atS = Math.ceil(fromS / 60) * 60; atS <= untilS; atS += 60) {
-    if (lightAt(shape, atS) <= 0.02) continue;
-    const at = instant(atS);
-    for (const { of, load } of seats) {
-      copy.write(`${at}\t${of.id}\t${text(load, atS)}`);
-      await copy.breathe();
-    }
-  }
-  await copy.close();
-  return copy.rows;
+  const steps = { fromS, endS: untilS + 1, stepS: 60 };
+  return copyMade(tx, 'string_frame', FRAME_COLUMNS, litRows(seats, shape, text, steps));
 }
 
 /** Quarters of an hour from `fromS` until `untilS`. */
-export async function writeQuarters(
+export function writeQuarters(
   tx: Knex.Transaction,
   seats: readonly Seat[],
   shape: LoadShape,
   fromS: number,
   untilS: number,
 ): Promise<number> {
-  const copy = await CopyInto.open(tx, 'string_quarter', QUARTER_COLUMNS);
   const text = kept((f) => {
     const v = sum(volts(f));
     return [
@@ -109,16 +114,8 @@ export async function writeQuarters(
       arrayField(f.temperature),
     ].join('\t');
   }, shape);
-  for (let atS = Math.ceil(fromS / QUARTER_S) * QUARTER_S; atS < untilS; atS += QUARTER_S) {
-    if (lightAt(shape, atS) <= 0.02) continue;
-    const at = instant(atS);
-    for (const { of, load } of seats) {
-      copy.write(`${at}\t${of.id}\t${text(load, atS)}`);
-      await copy.breathe();
-    }
-  }
-  await copy.close();
-  return copy.rows;
+  const steps = { fromS, endS: untilS, stepS: QUARTER_S };
+  return copyMade(tx, 'string_quarter', QUARTER_COLUMNS, litRows(seats, shape, text, steps));
 }
 
 /** The newest frame of each string, and what is concluded of it: as if judgement had followed it up to there. */
@@ -128,23 +125,14 @@ export async function writeNewest(
   shape: LoadShape,
   atS: number,
 ): Promise<void> {
-  const states = await CopyInto.open(tx, 'string_state', [
-    'string_id',
-    'site_id',
-    ...FRAME_COLUMNS.filter((c) => c !== 'string_id'),
-    'seen',
-  ]);
-  for (const { of, load } of seats) {
-    const f = frameAt(shape, load, atS, false);
-    const row = [mask(f), sum(volts(f)), power(f)];
-    const arrays = [volts(f), f.current, f.temperature, f.signal, f.via, f.state].map(arrayField);
-    const seen = arrayField(f.state.map((s) => (s === null ? 0 : atS)));
-    states.write([of.id, of.siteId, instant(atS), ...row, ...arrays, seen].join('\t'));
-    await states.breathe();
-  }
-  await states.close();
-
-  const judged = await CopyInto.open(tx, 'string_judgement', [
+  const stateColumns = FRAME_COLUMNS.filter((c) => c !== 'string_id');
+  await copyMade(
+    tx,
+    'string_state',
+    ['string_id', 'site_id', ...stateColumns, 'seen'],
+    newestRows(seats, shape, atS),
+  );
+  const judgedColumns = [
     'string_id',
     'site_id',
     'frame_at',
@@ -158,7 +146,36 @@ export async function writeNewest(
     'shutdown',
     'silent',
     'stuck',
-  ]);
+  ];
+  await copyMade(tx, 'string_judgement', judgedColumns, judgedRows(seats, shape, atS));
+  const at = new Date(atS * 1000);
+  await tx.raw(
+    `insert into input_state (input_id, site_id, at, voltage, current) select id, site_id, ?, 6330, 900 from input`,
+    [at],
+  );
+  await tx.raw(
+    `insert into inverter_state (inverter_id, site_id, at, ac_power, energy, status, insulation, arc_flag, earth_fault_flag)
+     select id, site_id, ?, 28000, 90000000, 'running', 950, false, false from inverter`,
+    [at],
+  );
+  await tx.raw(
+    `insert into weather_state (sensor_id, site_id, at, irradiance, temperature_air, temperature_module, wind_speed)
+     select id, site_id, ?, case when kind = 'ambient' then null else 930 end, 180, 450, 20 from sensor`,
+    [at],
+  );
+}
+
+function* newestRows(seats: readonly Seat[], shape: LoadShape, atS: number): Generator<string> {
+  for (const { of, load } of seats) {
+    const f = frameAt(shape, load, atS, false);
+    const row = [mask(f), sum(volts(f)), power(f)];
+    const arrays = [volts(f), f.current, f.temperature, f.signal, f.via, f.state].map(arrayField);
+    const seen = arrayField(f.state.map((s) => (s === null ? 0 : atS)));
+    yield [of.id, of.siteId, instant(atS), ...row, ...arrays, seen].join('\t');
+  }
+}
+
+function* judgedRows(seats: readonly Seat[], shape: LoadShape, atS: number): Generator<string> {
   const [passing, shutdown, silent] = (['passing', 'shutdown', 'silent'] as const).map((s) =>
     codeOf(UNIT_STATES, s),
   );
@@ -186,39 +203,20 @@ export async function writeNewest(
       memory.outputSince[i] = held ? atS - 240 : dawnS;
     });
     const count = (state: number | undefined) => memory.state.filter((s) => s === state).length;
-    judged.write(
-      [
-        of.id,
-        of.siteId,
-        instant(atS),
-        instant(atS),
-        arrayField(memory.state),
-        arrayField(memory.verdict),
-        arrayField(memory.since),
-        '{"units":{},"finding":null}',
-        JSON.stringify({ memory, serials: of.serials }),
-        count(passing),
-        count(shutdown),
-        count(silent),
-        memory.verdict.filter((v) => v === stuck).length,
-      ].join('\t'),
-    );
-    await judged.breathe();
+    yield [
+      of.id,
+      of.siteId,
+      instant(atS),
+      instant(atS),
+      arrayField(memory.state),
+      arrayField(memory.verdict),
+      arrayField(memory.since),
+      '{"units":{},"finding":null}',
+      JSON.stringify({ memory, serials: of.serials }),
+      count(passing),
+      count(shutdown),
+      count(silent),
+      memory.verdict.filter((v) => v === stuck).length,
+    ].join('\t');
   }
-  await judged.close();
-  const at = new Date(atS * 1000);
-  await tx.raw(
-    `insert into input_state (input_id, site_id, at, voltage, current) select id, site_id, ?, 6330, 900 from input`,
-    [at],
-  );
-  await tx.raw(
-    `insert into inverter_state (inverter_id, site_id, at, ac_power, energy, status, insulation, arc_flag, earth_fault_flag)
-     select id, site_id, ?, 28000, 90000000, 'running', 950, false, false from inverter`,
-    [at],
-  );
-  await tx.raw(
-    `insert into weather_state (sensor_id, site_id, at, irradiance, temperature_air, temperature_module, wind_speed)
-     select id, site_id, ?, case when kind = 'ambient' then null else 930 end, 180, 450, 20 from sensor`,
-    [at],
-  );
 }

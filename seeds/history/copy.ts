@@ -81,6 +81,22 @@ export async function copyRows(
   await copy.close();
 }
 
+/** Copies rows as they are made; gives their number. */
+export async function copyMade(
+  transaction: Knex.Transaction,
+  table: string,
+  columns: string[],
+  rows: Iterable<string>,
+): Promise<number> {
+  const copy = await CopyInto.open(transaction, table, columns);
+  for (const row of rows) {
+    copy.write(row);
+    await copy.breathe();
+  }
+  await copy.close();
+  return copy.rows;
+}
+
 /** A value of COPY's text format. */
 export const field = (value: number | string | null): string => (value === null ? '\\N' : String(value));
 

@@ -1,4 +1,6 @@
+import { instantsOf, offsetAt } from '../domain/time/wall-clock';
 import { gappedLine } from './gapped-line';
+import { Levels } from './Levels';
 import { SCREEN, type Paint } from './paint';
 import { ticksTo } from './ticks';
 import { clock, shortDate } from './times';
@@ -29,16 +31,17 @@ interface Props {
 const DAY_S = 86_400;
 const FONT = { fontSize: 12, fontFamily: 'inherit' } as const;
 
-/** Whole hours or days of the axis, few enough that their words fit. */
+/** Hours or days of the axis by the clock there, few enough that their words fit. */
 function times(from: number, to: number, timeZone: string): { at: number; words: string }[] {
-  const days = (to - from) / DAY_S;
-  const step = days > 1.5 ? DAY_S : 4 * 3600;
+  const byDays = to - from > 1.5 * DAY_S;
+  const stepMs = 1000 * (byDays ? DAY_S : 4 * 3600);
+  const wallMs = 1000 * from + offsetAt(1000 * from, timeZone);
   const list: { at: number; words: string }[] = [];
-  for (let at = from; at < to; at += step)
-    list.push({
-      at,
-      words: days > 1.5 ? shortDate(new Date(at * 1000), timeZone) : clock(new Date(at * 1000), timeZone),
-    });
+  for (let k = 0; 1000 * from + k * stepMs < 1000 * to + DAY_S * 1000; k++) {
+    const [ms] = instantsOf(wallMs + k * stepMs, timeZone);
+    if (ms === undefined || ms >= 1000 * to) continue;
+    list.push({ at: ms / 1000, words: byDays ? shortDate(ms, timeZone) : clock(ms, timeZone) });
+  }
   return list;
 }
 
@@ -122,14 +125,7 @@ export function HistoryLines({
           fill={paint.film}
         />
       ))}
-      {levels.map((v) => (
-        <g key={v}>
-          <path d={`M${plot.left} ${y(v)}H${plot.right}`} stroke={v === 0 ? paint.rule : paint.ruleFaint} />
-          <text x={plot.left - 8} y={y(v) + 4} textAnchor="end" fill={paint.ink2} {...FONT}>
-            {v}
-          </text>
-        </g>
-      ))}
+      <Levels levels={levels} plot={plot} y={y} paint={paint} />
       <text x={plot.left + 2} y={plot.top - 5} fill={paint.ink2} {...FONT}>
         {unit}
       </text>

@@ -1,6 +1,7 @@
 import { gappedLine } from './gapped-line';
 import type { TimeLine } from './HistoryLines';
 import { number } from './numbers';
+import { Levels } from './Levels';
 import { SCREEN, type Paint } from './paint';
 import { ticksTo } from './ticks';
 import { clock, shortDate } from './times';
@@ -53,14 +54,13 @@ export function MinuteLines({
       aria-label={label}
       style={{ height: 'auto', maxWidth: width * 1.5 }}
     >
-      {levels.map((v) => (
-        <g key={v}>
-          <path d={`M${plot.left} ${y(v)}H${plot.right}`} stroke={v === 0 ? paint.rule : paint.ruleFaint} />
-          <text x={plot.left - 6} y={y(v) + 4} textAnchor="end" fill={paint.ink2} {...FONT}>
-            {number(v, v === 0 ? 0 : digits)}
-          </text>
-        </g>
-      ))}
+      <Levels
+        levels={levels}
+        plot={plot}
+        y={y}
+        paint={paint}
+        words={(v) => number(v, v === 0 ? 0 : digits)}
+      />
       <text x={plot.left} y={height - 5} fill={paint.ink2} {...FONT}>
         {words(from)}
       </text>

@@ -1,3 +1,4 @@
+import { Levels } from './Levels';
 import { SCREEN, type Paint } from './paint';
 import { ticksTo } from './ticks';
 import { rollCallCurve } from '../words/drawings';
@@ -66,14 +67,7 @@ export function RollCallCurve({
       )}
       style={{ height: 'auto' }}
     >
-      {levels.map((v) => (
-        <g key={v}>
-          <path d={`M${plot.left} ${y(v)}H${plot.right}`} stroke={v === 0 ? paint.rule : paint.ruleFaint} />
-          <text x={plot.left - 8} y={y(v) + 4} textAnchor="end" fill={paint.ink2} {...FONT}>
-            {v}
-          </text>
-        </g>
-      ))}
+      <Levels levels={levels} plot={plot} y={y} paint={paint} />
       {minutes.map((s) => (
         <text
           key={s}

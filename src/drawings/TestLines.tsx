@@ -1,4 +1,5 @@
 import { gappedLine } from './gapped-line';
+import { Levels } from './Levels';
 import { SCREEN, type Paint } from './paint';
 import { ticksTo } from './ticks';
 import { testLines } from '../words/drawings';
@@ -73,14 +74,13 @@ export function TestLines({
       aria-label={label}
       style={{ display: 'block', height: 'auto' }}
     >
-      {levels.map((v) => (
-        <g key={v}>
-          <path d={`M${plot.left} ${y(v)}H${plot.right}`} stroke={v === 0 ? paint.rule : paint.ruleFaint} />
-          <text x={plot.left - 8} y={y(v) + 4} textAnchor="end" fill={paint.ink2} {...FONT}>
-            {v === top ? `${v} V` : v}
-          </text>
-        </g>
-      ))}
+      <Levels
+        levels={levels}
+        plot={plot}
+        y={y}
+        paint={paint}
+        words={(v) => (v === top ? `${v} V` : String(v))}
+      />
       {seconds.map((s) => (
         <text key={s} x={x(s)} y={plot.bottom + 20} textAnchor="middle" fill={paint.ink2} {...FONT}>
           {s} s

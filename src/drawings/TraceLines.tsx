@@ -1,4 +1,5 @@
 import { gappedLine } from './gapped-line';
+import { Levels } from './Levels';
 import { SCREEN, type Paint } from './paint';
 import { ticksTo } from './ticks';
 
@@ -37,14 +38,7 @@ export function TraceLines({ lines, limit, label, width = 720, height = 250, pai
       aria-label={label}
       style={{ display: 'block', height: 'auto' }}
     >
-      {levels.map((v) => (
-        <g key={v}>
-          <path d={`M${plot.left} ${y(v)}H${plot.right}`} stroke={v === 0 ? paint.rule : paint.ruleFaint} />
-          <text x={plot.left - 8} y={y(v) + 4} textAnchor="end" fill={paint.ink2} {...FONT}>
-            {v}
-          </text>
-        </g>
-      ))}
+      <Levels levels={levels} plot={plot} y={y} paint={paint} />
       <text x={plot.left + 4} y={plot.top - 2} fill={paint.ink2} {...FONT}>
         V
       </text>

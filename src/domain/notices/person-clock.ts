@@ -1,43 +1,19 @@
+import { instantsOf, offsetAt } from '../time/wall-clock';
+
 /**
- * A person's day: the clock on the wall in a time zone, days of 23 and 25 hours included. Zones come from the
- * runtime's IANA tables. A time that a day doesn't have is the one by the offset before the change; of a time that
- * it has twice, the first counts (RFC 5545, 3.3.5; "compatible" in ECMAScript's Temporal).
+ * A person's day: the clock on the wall in a time zone, days of 23 and 25 hours included. A time that a day doesn't
+ * have is the one by the offset before the change; of a time that it has twice, the first counts (RFC 5545, 3.3.5;
+ * "compatible" in ECMAScript's Temporal).
  */
 const MINUTE_MS = 60_000;
 const DAY_MIN = 1440;
 
-const made = new Map<string, Intl.DateTimeFormat>();
-function formatterOf(timeZone: string): Intl.DateTimeFormat {
-  let found = made.get(timeZone);
-  if (!found) {
-    found = new Intl.DateTimeFormat('en-GB', {
-      timeZone,
-      hourCycle: 'h23',
-      year: 'numeric',
-      month: '2-digit',
-      day: '2-digit',
-      hour: '2-digit',
-      minute: '2-digit',
-      second: '2-digit',
-    });
-    made.set(timeZone, found);
-  }
-  return found;
-}
-
 /** What the clock there shows, as if it were UTC, in ms. @throws RangeError for a zone that there is not */
-function wallMs(at: number, timeZone: string): number {
-  const of: Record<string, number> = {};
-  for (const part of formatterOf(timeZone).formatToParts(new Date(at)))
-    if (part.type !== 'literal') of[part.type] = Number(part.value);
-  return Date.UTC(of.year ?? 0, (of.month ?? 1) - 1, of.day, of.hour, of.minute, of.second);
-}
-const offsetMs = (at: number, timeZone: string): number =>
-  wallMs(at, timeZone) - Math.floor(at / 1000) * 1000;
+const wallMs = (at: number, timeZone: string): number => at + offsetAt(at, timeZone);
 
 export function isTimeZone(timeZone: string): boolean {
   try {
-    formatterOf(timeZone);
+    offsetAt(0, timeZone);
     return true;
   } catch {
     return false;
@@ -50,13 +26,9 @@ export function minuteOfDay(at: Date, timeZone: string): number {
   return Math.floor((((wall % 86_400_000) + 86_400_000) % 86_400_000) / MINUTE_MS);
 }
 
-/** The instant at which the clock there shows `wall` (ms as if UTC). */
-function instantOf(wall: number, timeZone: string): number {
-  const before = offsetMs(wall - 86_400_000, timeZone);
-  const after = offsetMs(wall + 86_400_000, timeZone);
-  const fits = [wall - before, wall - after].filter((t) => wallMs(t, timeZone) === wall);
-  return fits.length > 0 ? Math.min(...fits) : wall - before;
-}
+/** The instant at which the clock there shows `wall` (ms as if UTC), or would by the offset before it is put forward. */
+const instantOf = (wall: number, timeZone: string): number =>
+  instantsOf(wall, timeZone)[0] ?? wall - offsetAt(wall - 86_400_000, timeZone);
 
 /** The next instant after `now` at which the clock there shows that minute of the day; once in each of its days. */
 export function nextAt(now: Date, minute: number, timeZone: string): Date {

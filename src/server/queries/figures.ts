@@ -1,35 +1,11 @@
-import type { DaySums } from '../../domain/output/day-figures';
+import type { DayLight, DaySums } from '../../domain/output/day-figures';
 import type { TariffFrom } from '../../domain/output/tariff';
 import type { Tx } from '../db/transaction';
 import { SITE_VISIBLE } from './visible-site';
 
 /** Sums of days, causes and prices that figures are made of. Sites were found as the actor. */
 
-interface SumsRow {
-  day: string;
-  days: number;
-  energyAc: number;
-  energyDc: number;
-  nameplate: number | null;
-  gammaPmp: number | null;
-  complete: number;
-  lostMinutes: number;
-  lostMinutesGrid: number;
-  litDays: number;
-  quartersDue: number;
-  quartersLit: number;
-  insolation: number;
-  energyAcLit: number;
-  energyDcLit: number;
-  quartersWarm: number;
-  insolationWarm: number;
-  insolationTemperature: number;
-  energyAcWarm: number;
-  minutesLit: number;
-  limitedMinutes: number;
-  lostEnergy: number;
-  lostEnergyGrid: number;
-}
+type SumsRow = Omit<DaySums, 'light'> & Omit<DayLight, 'days'> & { litDays: number };
 
 const LIT = 'd.insolation is not null and d.nameplate > 0';
 /** Insolation of several days is weighted by nameplate, so that its product with the mean nameplate is the sum. */
