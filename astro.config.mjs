@@ -3,6 +3,7 @@ import process from 'node:process';
 import { defineConfig } from 'astro/config';
 import react from '@astrojs/react';
 import tailwind from '@astrojs/tailwind';
+import { apart } from './src/server/apart.ts';
 import { bundles } from './src/server/bundles.ts';
 import host from './src/server/host.ts';
 import { language } from './src/server/language.ts';
@@ -17,7 +18,7 @@ export default defineConfig({
   devToolbar: { enabled: false },
   // scripts are files: the browser runs no inline one but those that server/http/inline-scripts names
   vite: {
-    plugins: [bundles(), language(process.env.WAKELINE_LANGUAGE)],
+    plugins: [apart(), bundles(), language(process.env.WAKELINE_LANGUAGE)],
     build: { assetsInlineLimit: 0, target: 'es2022' },
     ssr: { noExternal: ['echarts-for-react'] },
   },

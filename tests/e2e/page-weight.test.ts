@@ -4,35 +4,24 @@ import { pageWeights, type PageWeight } from '../support/page-weight';
 /** Scripts that a page's first load fetches, gzip: by the build itself, so nothing grows unnoticed. Bytes. */
 const WITHOUT_CHART = 95_000;
 const WITH_CHART = 290_000;
-/** Pages that are still above the aim, and what they may weigh: a line may only shrink or go. All grew by up to
- * 2 kB when the sentences of the domain came to stand with the other words, an object for each file. */
+/** Pages that are still above the aim, and what they may weigh: a line may only shrink or go. */
 const STILL_ABOVE: Readonly<Record<string, number>> = {
-  'index.astro': 98_000,
-  'capture/[site].astro': 128_000,
-  'capture/index.astro': 128_000,
-  'cases/[case].astro': 110_000,
-  'cases/index.astro': 97_000,
-  'commissioning/new.astro': 99_000,
-  'commissioning/[site]/as-built.astro': 107_000,
-  'commissioning/[site]/checks.astro': 114_000,
-  'commissioning/[site]/import.astro': 97_000,
-  'commissioning/[site]/readings.astro': 117_000,
-  'commissioning/[site]/roll-call.astro': 113_000,
-  'commissioning/[site]/serials.astro': 97_000,
-  'commissioning/[site]/shutdown-test/[test].astro': 134_000,
-  'commissioning/[site]/shutdown-test/index.astro': 107_000,
-  'commissioning/[site]/walk.astro': 98_000,
-  'equipment/[family]/[type].astro': 97_000,
-  'methods.astro': 119_000,
-  'my-site/[site].astro': 98_000,
-  'shutdown.astro': 96_000,
-  'sites/[site]/index.astro': 111_000,
-  'try-a-reading.astro': 102_000,
+  'capture/[site].astro': 125_000,
+  'capture/index.astro': 125_000,
+  'cases/[case].astro': 106_000,
+  'commissioning/[site]/checks.astro': 110_000,
+  'commissioning/[site]/readings.astro': 111_000,
+  'commissioning/[site]/roll-call.astro': 104_000,
+  'commissioning/[site]/shutdown-test/[test].astro': 127_000,
+  'commissioning/[site]/shutdown-test/index.astro': 98_000,
+  'methods.astro': 117_000,
+  'sites/[site]/index.astro': 108_000,
+  'try-a-reading.astro': 98_000,
 };
 /** The same of pages with a chart, all in all. */
 const STILL_ABOVE_WITH_CHART: Readonly<Record<string, number>> = {
-  'commissioning/[site]/membership.astro': 309_000,
-  'sites/[site]/strings/[string].astro': 320_000,
+  'commissioning/[site]/membership.astro': 302_000,
+  'sites/[site]/strings/[string].astro': 315_000,
 };
 /** Before the chart comes. */
 const BEFORE_CHART = 120_000;
