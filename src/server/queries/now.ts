@@ -124,4 +124,7 @@ export async function gatewaysNow(tx: Tx, at: Date, siteId: number): Promise<Gat
 export const isLight = (
   place: { latitude: number; longitude: number; altitude: number },
   at: Date,
-): boolean => solarPositionQuick(at.getTime(), place).apparentElevation >= DIM_BELOW_ELEVATION;
+): boolean => isLightAt(solarPositionQuick(at.getTime(), place).apparentElevation);
+
+/** The same by the sun's elevation there, degrees. */
+export const isLightAt = (elevation: number): boolean => elevation >= DIM_BELOW_ELEVATION;

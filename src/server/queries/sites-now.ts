@@ -2,10 +2,10 @@ import { solarPositionQuick } from '../../domain/photovoltaics/sun/position-quic
 import type { CommandNow, Counts, SiteNow } from '../../schemas/api/now';
 import type { InForce } from '../../domain/verdicts/codes';
 import type { Tx } from '../db/transaction';
-import { isFresh, isLight, isSilent } from './now';
+import { isFresh, isLightAt, isSilent } from './now';
 import { SITE_VISIBLE } from './visible-site';
 
-interface Row extends Counts {
+interface Place {
   id: number;
   ref: string;
   name: string;
@@ -16,67 +16,107 @@ interface Row extends Counts {
   longitude: number;
   altitude: number;
   reportIntervalS: number;
-  strings: number;
-  zones: number;
-  acPower: number | null;
-  acPowerAt: Date | null;
-  acPowerMax: number;
-  reportedAt: Date | null;
-  gatewaysHeard: (string | null)[];
-  spokeAt: Date | null;
-  said: { where: string; whereKind: CommandNow['whereKind']; inForce: InForce; since: string; by: string }[];
 }
+
+/** By the number of a site; one that has none of the kind is absent. Times as PostgreSQL writes them in JSON. */
+type BySite<T> = Partial<Record<number, T>>;
+
+interface Parts {
+  judged: BySite<Omit<Counts, 'units'>>;
+  units: BySite<number>;
+  strings: BySite<number>;
+  acPowerMax: BySite<number>;
+  output: BySite<{ acPower: number | null; at: string }>;
+  reportedAt: BySite<string>;
+  zones: BySite<number>;
+  gatewaysHeard: BySite<(string | null)[]>;
+  spokeAt: BySite<string | null>;
+  said: BySite<
+    { where: string; whereKind: CommandNow['whereKind']; inForce: InForce; since: string; by: string }[]
+  >;
+}
+
+const NOTHING_JUDGED: Omit<Counts, 'units'> = {
+  passing: 0,
+  shutdown: 0,
+  unheard: 0,
+  silent: 0,
+  dark: 0,
+  stuck: 0,
+  notShuttingDown: 0,
+  unconfirmed: 0,
+};
+
+/** The newest command of a zone or transmitter `w`, by the index that keeps them in order, however many came before. */
+const newestCommand = (of: 'zone_id' | 'transmitter_id'): string => `cross join lateral (
+  select in_force, since, said_by from command
+  where ${of} = w.id and ${of === 'zone_id' ? 'transmitter_id' : 'zone_id'} is null
+  order by since desc limit 1) o`;
 
 /**
  * What holds at `at` at the sites that the actor sees, or at those of the given numbers (then whoever calls has checked
  * them); by name. A fixed number of statements, however many sites.
  */
 export async function sitesNow(tx: Tx, at: Date, siteIds?: readonly number[]): Promise<SiteNow[]> {
-  const { rows } = await tx.raw<{ rows: Row[] }>(
-    // of every site its own lines, by their index: a plan that joins whole lists guesses one site, and takes n² for n
-    `select c.id, c.ref, c.name, c.place, c.time_zone as "timeZone", c.stage, c.latitude, c.longitude, c.altitude,
-            c.report_interval_s as "reportIntervalS", p.units, w.strings, j.*, m.*, r.*, z.*, g.*, l.*, d.*
-     from (select * from site where ${siteIds ? 'site.id = any (:siteIds)' : SITE_VISIBLE}) c
-     cross join lateral (
-       select coalesce(sum(passing), 0)::int as passing, coalesce(sum(shutdown), 0)::int as shutdown,
-              coalesce(sum(unheard), 0)::int as unheard, coalesce(sum(silent), 0)::int as silent,
-              coalesce(sum(dark), 0)::int as dark, coalesce(sum(stuck), 0)::int as stuck,
-              coalesce(sum(not_shutting_down), 0)::int as "notShuttingDown",
-              coalesce(sum(unconfirmed), 0)::int as unconfirmed
-       from string_judgement where site_id = c.id) j
-     cross join lateral (
-       select count(*)::int as units from placement where placed_to is null and site_id = c.id) p
-     cross join lateral (select count(*)::int as strings from string where site_id = c.id) w
-     cross join lateral (
-       select coalesce(sum(inv.ac_power_max), 0) as "acPowerMax", sum(st.ac_power)::float8 as "acPower",
-              max(st.at) as "acPowerAt"
-       from inverter inv left join inverter_state st on st.inverter_id = inv.id where inv.site_id = c.id) m
-     cross join lateral (select max(at) as "reportedAt" from string_state where site_id = c.id) r
-     cross join lateral (select count(*)::int as zones from zone where site_id = c.id) z
-     cross join lateral (
-       select coalesce(json_agg(last_heard_at), '[]') as "gatewaysHeard" from gateway where site_id = c.id) g
-     cross join lateral (
-       select max(last_spoke_at) as "spokeAt" from logger where site_id = c.id and connected_at is not null) l
-     cross join lateral (
-       select coalesce(json_agg(json_build_object('where', s.name, 'whereKind', s.kind, 'inForce', s.in_force,
-                       'since', s.since, 'by', s.said_by) order by s.since), '[]') as said
-       from (select distinct on (o.zone_id, o.transmitter_id) o.in_force, o.since, o.said_by,
-                    coalesce(z.name, t.name) as name, case when o.zone_id is null then 'transmitter' else 'zone' end as kind
-             from command o
-             left join zone z on z.id = o.zone_id
-             left join transmitter t on t.id = o.transmitter_id
-             where o.site_id = c.id
-             order by o.zone_id, o.transmitter_id, o.since desc) s
-       where s.in_force <> 'released') d
-     order by c.name`,
+  const { rows: places } = await tx.raw<{ rows: Place[] }>(
+    `select id, ref, name, place, time_zone as "timeZone", stage, latitude, longitude, altitude,
+            report_interval_s as "reportIntervalS"
+     from site where ${siteIds ? 'site.id = any (:siteIds)' : SITE_VISIBLE} order by name`,
     siteIds ? { siteIds: [...siteIds] } : {},
   );
-  const ratios = await performanceRatios(
-    tx,
-    rows.map((r) => r.id),
-    at,
+  if (places.length === 0) return [];
+  const ids = places.map((p) => p.id);
+  const parts = await partsOf(tx, ids);
+  const ratios = await performanceRatios(tx, ids, at);
+  return places.map((place) => siteOf(place, parts, at, ratios.get(place.id) ?? null));
+}
+
+/**
+ * What hangs on the sites of the given numbers. Each table is read once for all of them and summed by itself: joined, a
+ * plan guesses few sites and goes through every other list for each.
+ */
+async function partsOf(tx: Tx, siteIds: readonly number[]): Promise<Parts> {
+  const bySite = (value: string, from: string): string =>
+    `(select coalesce(json_object_agg(site_id, ${value}), '{}') from (${from} group by site_id) x)`;
+  const here = 'site_id = any (:siteIds::int4[])';
+  const { rows } = await tx.raw<{ rows: Parts[] }>(
+    `select
+       ${bySite(
+         `json_build_object('passing', passing, 'shutdown', shutdown, 'unheard', unheard, 'silent', silent, 'dark', dark,
+            'stuck', stuck, 'notShuttingDown', not_shutting_down, 'unconfirmed', unconfirmed)`,
+         `select site_id, sum(passing) as passing, sum(shutdown) as shutdown, sum(unheard) as unheard,
+            sum(silent) as silent, sum(dark) as dark, sum(stuck) as stuck, sum(not_shutting_down) as not_shutting_down,
+            sum(unconfirmed) as unconfirmed from string_judgement where ${here}`,
+       )} as judged,
+       ${bySite('n', `select site_id, count(*) as n from placement where placed_to is null and ${here}`)} as units,
+       ${bySite('n', `select site_id, count(*) as n from string where ${here}`)} as strings,
+       ${bySite('w', `select site_id, sum(ac_power_max) as w from inverter where ${here}`)} as "acPowerMax",
+       ${bySite(
+         `json_build_object('acPower', w, 'at', at)`,
+         `select site_id, sum(ac_power) as w, max(at) as at from inverter_state where ${here}`,
+       )} as output,
+       ${bySite('at', `select site_id, max(at) as at from string_state where ${here}`)} as "reportedAt",
+       ${bySite('n', `select site_id, count(*) as n from zone where ${here}`)} as zones,
+       ${bySite('heard', `select site_id, array_agg(last_heard_at) as heard from gateway where ${here}`)} as "gatewaysHeard",
+       ${bySite(
+         'at',
+         `select site_id, max(last_spoke_at) as at from logger where connected_at is not null and ${here}`,
+       )} as "spokeAt",
+       ${bySite(
+         'said',
+         `select site_id, json_agg(json_build_object('where', name, 'whereKind', kind, 'inForce', in_force, 'since', since,
+            'by', said_by) order by since) as said
+          from (select site_id, name, 'zone' as kind, o.* from zone w ${newestCommand('zone_id')} where ${here}
+                union all
+                select site_id, name, 'transmitter', o.* from transmitter w ${newestCommand('transmitter_id')}
+                where ${here}) newest
+          where in_force <> 'released'`,
+       )} as said`,
+    { siteIds: [...siteIds] },
   );
-  return rows.map((row) => siteOf(row, at, ratios.get(row.id) ?? null));
+  const [parts] = rows;
+  if (!parts) throw new Error('A statement without a from has one row.');
+  return parts;
 }
 
 /**
@@ -85,61 +125,55 @@ export async function sitesNow(tx: Tx, at: Date, siteIds?: readonly number[]): P
  */
 export async function sitesForShutdown(tx: Tx, refs: readonly string[]): Promise<number[]> {
   const { rows } = await tx.raw<{ rows: { id: number }[] }>(
-    `select site.id from site
-     where ${SITE_VISIBLE} and (site.ref = any (:refs::uuid[]) or exists (
-       select from (
-         select distinct on (c.zone_id, c.transmitter_id) c.in_force from command c
-         where c.site_id = site.id order by c.zone_id, c.transmitter_id, c.since desc) newest
-       where newest.in_force <> 'released'))`,
+    `select site.id from site where ${SITE_VISIBLE} and site.ref = any (:refs::uuid[])
+     union
+     select w.site_id from zone w join site on site.id = w.site_id ${newestCommand('zone_id')}
+     where ${SITE_VISIBLE} and o.in_force <> 'released'
+     union
+     select w.site_id from transmitter w join site on site.id = w.site_id ${newestCommand('transmitter_id')}
+     where ${SITE_VISIBLE} and o.in_force <> 'released'`,
     { refs: [...refs] },
   );
   return rows.map((r) => r.id);
 }
 
-function siteOf(row: Row, at: Date, performanceRatio: number | null): SiteNow {
-  const commands = row.said.map((s) => ({ ...s, since: new Date(s.since).toISOString() }));
+function siteOf(place: Place, parts: Parts, at: Date, performanceRatio: number | null): SiteNow {
+  const { id } = place;
+  const commands = (parts.said[id] ?? []).map((s) => ({ ...s, since: new Date(s.since).toISOString() }));
   const zonesDown = commands.filter((c) => c.whereKind === 'zone');
-  const power =
-    row.acPower !== null && row.acPowerAt && isFresh(row.acPowerAt, at, row.reportIntervalS)
-      ? row.acPower
-      : null;
-  const light = isLight(row, at);
+  const zones = parts.zones[id] ?? 0;
+  const output = parts.output[id];
+  const reportedAt = parts.reportedAt[id];
+  const spokeAt = parts.spokeAt[id];
+  const elevation = solarPositionQuick(at.getTime(), place).apparentElevation;
   return {
-    id: row.ref,
-    name: row.name,
-    place: row.place,
-    timeZone: row.timeZone,
-    stage: row.stage,
-    counts: {
-      units: row.units,
-      passing: row.passing,
-      shutdown: row.shutdown,
-      unheard: row.unheard,
-      silent: row.silent,
-      dark: row.dark,
-      stuck: row.stuck,
-      notShuttingDown: row.notShuttingDown,
-      unconfirmed: row.unconfirmed,
-    },
-    strings: row.strings,
-    power,
-    acPowerMax: row.acPowerMax,
-    reportedAt: row.reportedAt?.toISOString() ?? null,
-    daylight: solarPositionQuick(at.getTime(), row).apparentElevation > 0,
+    id: place.ref,
+    name: place.name,
+    place: place.place,
+    timeZone: place.timeZone,
+    stage: place.stage,
+    counts: { units: parts.units[id] ?? 0, ...(parts.judged[id] ?? NOTHING_JUDGED) },
+    strings: parts.strings[id] ?? 0,
+    power: output && isFresh(new Date(output.at), at, place.reportIntervalS) ? output.acPower : null,
+    acPowerMax: parts.acPowerMax[id] ?? 0,
+    reportedAt: reportedAt === undefined ? null : new Date(reportedAt).toISOString(),
+    daylight: elevation > 0,
     // every zone is in shutdown since the last of them went
     inShutdownSince:
-      row.zones > 0 && zonesDown.length === row.zones
+      zones > 0 && zonesDown.length === zones
         ? (zonesDown
             .map((c) => c.since)
             .sort()
             .at(-1) ?? null)
         : null,
     commands,
-    silentGateways: light
-      ? row.gatewaysHeard.filter((heard) => isSilent(heard ? new Date(heard) : null, at, row.reportIntervalS))
-          .length
+    silentGateways: isLightAt(elevation)
+      ? (parts.gatewaysHeard[id] ?? []).filter((heard) =>
+          isSilent(heard ? new Date(heard) : null, at, place.reportIntervalS),
+        ).length
       : 0,
-    loggerConnected: row.spokeAt !== null && !isSilent(row.spokeAt, at, Math.max(60, row.reportIntervalS)),
+    loggerConnected:
+      typeof spokeAt === 'string' && !isSilent(new Date(spokeAt), at, Math.max(60, place.reportIntervalS)),
     performanceRatio30d: performanceRatio,
   };
 }
@@ -171,8 +205,8 @@ async function performanceRatios(
       { asked: [...asked], at, from: new Date(at.getTime() - 30 * 86_400_000) },
     );
     const untilMs = at.getTime() + RATIO_KEPT_MS;
-    for (const id of asked)
-      ratiosKept.set(id, { untilMs, ratio: rows.find((r) => r.siteId === id)?.ratio ?? null });
+    const found = new Map(rows.map((r) => [r.siteId, r.ratio]));
+    for (const id of asked) ratiosKept.set(id, { untilMs, ratio: found.get(id) ?? null });
   }
   return new Map(siteIds.map((id) => [id, ratiosKept.get(id)?.ratio ?? null]));
 }
