@@ -2,7 +2,7 @@ import { randomUUID } from 'node:crypto';
 import type { Knex } from 'knex';
 import { readingAround } from '../../src/domain/commissioning/readings/around';
 import { judgeReading } from '../../src/domain/commissioning/readings/judge-reading';
-import { vocOf } from '../../src/domain/photovoltaics/module/datasheet';
+import { vocOf } from '../../src/domain/photovoltaics/module/open-circuit';
 import { readingInput, type ReadingInput } from '../../src/schemas/api/readings';
 import { moduleTypesOf, stringSheets, unitTypesOf } from '../../src/server/queries/captured-site';
 import { insertReading } from '../../src/server/queries/readings';

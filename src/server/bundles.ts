@@ -10,11 +10,15 @@ const TOGETHER: readonly (readonly [name: string, test: RegExp])[] = [
   ],
 ];
 
+const OURS = /\/src\/(components|domain|drawings|features|lib|schemas|words)\//;
+
 /** How the browser's scripts are cut into files. The server's bundle is left as it comes. */
 export function bundles(): Plugin {
   return {
     name: 'wakeline:bundles',
     applyToEnvironment: (environment) => environment.name === 'client',
+    // none of ours does anything by being imported: a list made at the top of a file goes where the file goes
+    transform: (_, id) => (OURS.test(id) ? { moduleSideEffects: false } : null),
     outputOptions: (options) => ({
       ...options,
       manualChunks: (id) => TOGETHER.find(([, test]) => test.test(id))?.[0],

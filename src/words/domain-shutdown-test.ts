@@ -1,4 +1,4 @@
-import type { TestResult } from '../domain/commissioning/shutdown-test';
+import type { TestResult } from '../domain/commissioning/test-results';
 import { isOne } from './language';
 
 /** Words of a shutdown test that pages, papers and the verdict share. */

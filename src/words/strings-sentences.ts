@@ -1,6 +1,6 @@
 import { countAtStart, counted, listed, number, quantity, volts } from '../drawings/numbers';
 import { clockOrDate } from '../drawings/times';
-import { commandWords } from '../domain/verdicts/event-words';
+import { commandWords } from '../domain/verdicts/command-words';
 import type { SlotNow, StringNow } from '../schemas/api/now';
 
 /** The heading of a string's page and the sentence under it. A figure that carries the sentence is strong. */

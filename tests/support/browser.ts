@@ -48,8 +48,14 @@ export async function hydrated(page: Page): Promise<void> {
           const waiting = [...document.querySelectorAll('astro-island[client="load"]')].filter((island) => {
             if (island.hasAttribute('ssr')) return true;
             // the attribute goes when hydration begins; elements that React has taken over carry its mark
-            const first = island.querySelector(':scope > :not(template, script, style, link)');
-            return first && !Object.keys(first).some((key) => key.startsWith('__reactProps'));
+            // of a part that comes later it is the first element inside that carries it
+            const firsts = [
+              island.querySelector(':scope > :not(template, script, style, link)'),
+              ...[...island.querySelectorAll('[data-later]')].map((part) => part.firstElementChild),
+            ];
+            return firsts.some(
+              (first) => first && !Object.keys(first).some((key) => key.startsWith('__reactProps')),
+            );
           });
           if (waiting.length === 0) return;
           if (Date.now() > untilMs)

@@ -1,4 +1,4 @@
-import { vocOf } from '../../domain/photovoltaics/module/datasheet';
+import { vocOf } from '../../domain/photovoltaics/module/open-circuit';
 import type { Interpretation } from '../../domain/readings/interpret';
 import type { ReadingQuestion } from '../../domain/readings/reading';
 import { number } from '../../drawings/numbers';

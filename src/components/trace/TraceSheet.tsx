@@ -4,7 +4,7 @@ import { Table, type Column } from '../ui/Table';
 import { TraceLines } from '../../drawings/TraceLines';
 import { UNKNOWN, volts } from '../../drawings/numbers';
 import { clockOrDate, clockSeconds, fullTime } from '../../drawings/times';
-import { commandWords } from '../../domain/verdicts/event-words';
+import { commandWords } from '../../domain/verdicts/command-words';
 import { api } from '../../lib/api';
 import { useLive } from '../../lib/live-hook';
 import { tells } from '../../lib/patch';

@@ -1,6 +1,6 @@
 import { shutdownTestSaid } from '../../words/domain-shutdown-test';
 import { instrumentSaid, testLacks, testNotes } from '../../words/domain-shutdown-test-record';
-import type { TestResult } from './shutdown-test';
+import type { TestResult } from './test-results';
 import type { Instrument, RoundEvidence, TestedPart, TestReading, TestRecord } from './shutdown-test-record';
 
 /** What a test still lacks, and what else is to be said of it. */

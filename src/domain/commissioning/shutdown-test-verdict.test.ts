@@ -1,6 +1,6 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import type { TestResult } from './shutdown-test';
+import type { TestResult } from './test-results';
 import {
   faultOfAct,
   nextRound,

@@ -2,15 +2,9 @@ import { testCautions } from '../../words/domain-shutdown-test';
 import { verdictSaid } from '../../words/domain-shutdown-test-record';
 import { judgementTimes, timeLimitOf } from '../verdicts/context';
 import { instrumentFaults, missing, notesOf } from './shutdown-test-remarks';
-import {
-  homeRunLimit,
-  judgeString,
-  limitSource,
-  testHeadline,
-  WORST,
-  type StringTestResult,
-  type TestResult,
-} from './shutdown-test';
+import { homeRunLimit } from '../verdicts/conductor-limits';
+import { judgeString, limitSource, testHeadline, type StringTestResult } from './shutdown-test';
+import { WORST, type TestResult } from './test-results';
 import type {
   RoundEvidence,
   StringConduct,

@@ -1,16 +1,7 @@
 import { shutdownTestSaid, stringTestSaid, testCautions } from '../../words/domain-shutdown-test';
-import { OUTSIDE_ARRAY_LIMIT_V } from '../verdicts/conductors';
+import { homeRunLimit, OUTSIDE_ARRAY_LIMIT_V } from '../verdicts/conductor-limits';
 import type { RuleSet } from '../verdicts/context';
-
-/** NEC 690.12(B)(2), 2017 and later editions: inside the array boundary, between two conductors or to earth. */
-export const INSIDE_ARRAY_LIMIT_V = 80;
-
-/**
- * V that a home run may carry after the rule set's time, any two conductors or conductor to earth. Inside the array
- * the 2014 edition sets no limit; 80 V are a yardstick there too.
- */
-export const homeRunLimit = (homeRunLeavesArray: boolean): number =>
-  homeRunLeavesArray ? OUTSIDE_ARRAY_LIMIT_V : INSIDE_ARRAY_LIMIT_V;
+import { WORST, type TestResult } from './test-results';
 
 /**
  * What a shutdown test has shown. Only a rated instrument at the home run's inverter end can witness a pass: inverters
@@ -59,7 +50,6 @@ export interface ShutdownTestInput {
   transmitters: readonly { name: string; takenOffAlone: boolean }[];
 }
 
-export type TestResult = 'passed' | 'failed' | 'consistent' | 'not_witnessed';
 export interface StringTestResult {
   name: string;
   result: TestResult;
@@ -78,9 +68,6 @@ export interface ShutdownTestFinding {
   missing: string[];
   cautions: string[];
 }
-
-/** The gravest first: the whole of a test is as good as its worst string. */
-export const WORST: readonly TestResult[] = ['failed', 'not_witnessed', 'consistent', 'passed'];
 
 /**
  * Result of each string and of the whole: the worst of its strings. `passed` needs a measured voltage before the

@@ -1,6 +1,7 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import { checkModuleType, moduleFromDatasheet } from '../photovoltaics/module/datasheet';
+import { checkModuleType } from '../photovoltaics/module/check-type';
+import { moduleFromDatasheet } from '../photovoltaics/module/datasheet';
 import { connectorPairFinding, type ConnectorIdentity } from './connectors';
 import { EQUIPMENT_FAMILIES } from './families';
 import { asKept, asTyped, type Entry } from './fields';

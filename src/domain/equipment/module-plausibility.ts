@@ -1,5 +1,5 @@
 import { modulePlausibilitySaid as said } from '../../words/domain-equipment-plausibility';
-import { checkModuleType } from '../photovoltaics/module/datasheet';
+import { checkModuleType } from '../photovoltaics/module/check-type';
 import type { Conflict, Doubt } from './doubt';
 import { numberOf, type Entry } from './fields';
 import { moduleSheetOf } from './module-fields';

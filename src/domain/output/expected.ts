@@ -1,5 +1,5 @@
 import type { ModuleType } from '../equipment/module-type';
-import { vocOf } from '../photovoltaics/module/datasheet';
+import { vocOf } from '../photovoltaics/module/open-circuit';
 import { temperatureCellNoct } from '../photovoltaics/temperature/cell';
 import { median, sigmaMad } from './robust';
 

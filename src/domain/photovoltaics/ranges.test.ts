@@ -8,7 +8,7 @@ import { dniExtra } from './irradiance/extraterrestrial';
 import { iamAshrae, iamPhysical, PLAIN_GLASS } from './irradiance/incidence';
 import { planeIrradiance, TRANSPOSITION_MODELS } from './irradiance/transposition';
 import { circuitCurrents, coldVoltageFactor, voltageAtTemperature } from './limits/string-sizing';
-import { vocOf } from './module/datasheet';
+import { vocOf } from './module/open-circuit';
 import { pvwattsDc } from './module/pvwatts';
 import { translatePoint } from './module/translation';
 import { solarPosition } from './sun/position';

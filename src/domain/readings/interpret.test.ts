@@ -1,7 +1,7 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { UNIT_PRESETS } from '../equipment/unit-type';
-import { vocOf } from '../photovoltaics/module/datasheet';
+import { vocOf } from '../photovoltaics/module/open-circuit';
 import { earthFinding } from './earth';
 import { hypothesesFor } from './hypotheses';
 import { interpretReading } from './interpret';

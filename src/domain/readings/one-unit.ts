@@ -1,4 +1,4 @@
-import { vocOf } from '../photovoltaics/module/datasheet';
+import { vocOf } from '../photovoltaics/module/open-circuit';
 import type { Conditions, ReadingQuestion } from './reading';
 
 /** What one passing module and one unit in shutdown give now, and how well that is known. Volts. */

@@ -1,6 +1,6 @@
 import type { ModuleType } from '../equipment/module-type';
 import { UNIT_PRESETS } from '../equipment/unit-type';
-import { vocOf } from '../photovoltaics/module/datasheet';
+import { vocOf } from '../photovoltaics/module/open-circuit';
 import { hypothesesFor } from './hypotheses';
 import { ORDINARY_METER, type Hypothesis, type ReadingQuestion } from './reading';
 

@@ -1,4 +1,5 @@
 import { conductorsSaid as said } from '../../words/domain-verdicts-evidence';
+import { OUTSIDE_ARRAY_LIMIT_V } from './conductor-limits';
 import { commandedAt, lightAt, type Commanded, type StringContext } from './context';
 import { UNCHANGED, type JudgeOutcome } from './evidence';
 import type { StringFinding } from './codes';
@@ -24,8 +25,6 @@ export interface InputReading {
   module: { expectedV: number; relativeSd: number; siblings?: number } | null;
 }
 
-/** NEC 690.12(B)(1): conductors outside the array boundary after initiation. */
-export const OUTSIDE_ARRAY_LIMIT_V = 30;
 /** Readings that must agree before a finding begins or ends. The gravest needs two, for one may be a stray. */
 export const AGREEING: Record<StringFinding, number> = {
   not_shutting_down: 2,

@@ -1,6 +1,7 @@
 import { describe, expect, it } from 'vitest';
 import { COMMANDS, EVENT_KINDS } from './codes';
-import { commandWords, eventWords, KIND_WORDS, KINDS } from './event-words';
+import { commandWords } from './command-words';
+import { eventWords, KIND_WORDS, KINDS } from './event-words';
 
 describe('the words of an event', () => {
   it.each(EVENT_KINDS)('%s has a line without any detail', (kind) => {

@@ -1,5 +1,5 @@
-import { commandTexts, eventKindTexts, eventSaid as said } from '../../words/domain-verdicts-events';
-import { COMMANDS, EVENT_KINDS, INVERTER_STATUSES, type EventKind, type InForce } from './codes';
+import { eventKindTexts, eventSaid as said } from '../../words/domain-verdicts-events';
+import { COMMANDS, EVENT_KINDS, INVERTER_STATUSES, type EventKind } from './codes';
 
 /** What an event says, in one line, for lists, charts and mail. */
 export type EventTone = 'rust' | 'crimson' | 'plum' | 'slate' | 'petrol';
@@ -36,9 +36,6 @@ function unitsOf(detail: Detail): EventUnits {
   if (positions.length > NAMED_MAX) return { positions: [], count: positions.length };
   return { positions, count: positions.length || serials || null };
 }
-
-/** What is in force, as it stands at the beginning of a line. */
-export const commandWords = (inForce: InForce): string => commandTexts[inForce];
 
 /** One line for one event; what a detail lacks is left out, never guessed. */
 export function eventWords(kind: EventKind, detail: Detail): EventWords {

@@ -2,7 +2,7 @@ import type { ModuleType } from '../../domain/equipment/module-type';
 import { UNIT_KINDS, UNIT_PRESETS } from '../../domain/equipment/unit-type';
 import { expectedBand, expectedModule } from '../../domain/output/expected';
 import { yields } from '../../domain/output/yields';
-import { vocOf } from '../../domain/photovoltaics/module/datasheet';
+import { vocOf } from '../../domain/photovoltaics/module/open-circuit';
 import { interpretReading } from '../../domain/readings/interpret';
 import { ORDINARY_METER } from '../../domain/readings/reading';
 import { percent, quantity } from '../../drawings/numbers';

@@ -2,11 +2,11 @@ import { UNIT_PRESETS } from '../../domain/equipment/unit-type';
 import { SIBLINGS_FOR_SPREAD } from '../../domain/output/expected';
 import { PRIORS } from '../../domain/readings/hypotheses';
 import { TELL_FROM } from '../../domain/readings/interpret';
+import { OUTSIDE_ARRAY_LIMIT_V } from '../../domain/verdicts/conductor-limits';
 import {
   AGREEING,
   DEVIATIONS,
   INPUTS_DIFFER,
-  OUTSIDE_ARRAY_LIMIT_V,
   STEADY_DEVIATIONS,
   STEADY_S,
 } from '../../domain/verdicts/conductors';

@@ -16,7 +16,7 @@ import {
   QUARTERS_MIN,
   UNITS_MIN,
 } from '../../domain/output/weak-unit';
-import { OUTSIDE_ARRAY_LIMIT_V } from '../../domain/verdicts/conductors';
+import { OUTSIDE_ARRAY_LIMIT_V } from '../../domain/verdicts/conductor-limits';
 import { timeLimitOf } from '../../domain/verdicts/context';
 import { number } from '../../drawings/numbers';
 import { brackets, frac, n, op, row, sub, sum, sup, v, word } from './math';

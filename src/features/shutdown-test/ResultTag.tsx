@@ -1,5 +1,5 @@
 import { Tag, type Tone } from '../../components/ui/Tag';
-import type { TestResult } from '../../domain/commissioning/shutdown-test';
+import type { TestResult } from '../../domain/commissioning/test-results';
 import { RESULT_WORDS } from '../../words/domain-shutdown-test';
 
 const LOOK: Record<TestResult, { tone: Tone; shape: string }> = {

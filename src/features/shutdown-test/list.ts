@@ -1,4 +1,4 @@
-import { WORST } from '../../domain/commissioning/shutdown-test';
+import { WORST } from '../../domain/commissioning/test-results';
 import { listed } from '../../drawings/numbers';
 import type { ShutdownTestList, TestListView, TestRow, ZoneStanding } from '../../schemas/api/shutdown-test';
 import { shutdownTestReportList } from '../../words/shutdown-test-report';

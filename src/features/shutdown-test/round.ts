@@ -1,4 +1,4 @@
-import { homeRunLimit } from '../../domain/commissioning/shutdown-test';
+import { homeRunLimit } from '../../domain/verdicts/conductor-limits';
 import type {
   EvidenceTrace,
   RoundEvidence,

@@ -2,12 +2,12 @@ import { useQuery } from '@tanstack/react-query';
 import { useMemo } from 'react';
 import { CauseSheet } from '../../components/causes/CauseSheet';
 import { byGravity } from '../../components/causes/words';
-import { TraceSheet } from '../../components/trace/TraceSheet';
 import { Caution } from '../../components/ui/Caution';
 import { LiveHeading } from '../../components/ui/LiveHeading';
 import { NotRead } from '../../components/ui/NotRead';
 import { useNow } from '../../components/ui/Time';
 import { clocksDiffer, useReaderZone } from '../../components/ui/reader-zone';
+import { later } from '../../lib/later';
 import { useLive } from '../../lib/live-hook';
 import { queryClient } from '../../lib/query-client';
 import { useViewInUrl } from '../../lib/view-in-url';
@@ -15,14 +15,9 @@ import type { CaseItem } from '../../schemas/api/cases';
 import type { SiteStanding } from '../../schemas/api/causes';
 import type { EventsPage, SitePage } from '../../schemas/api/site';
 import { paths } from '../../schemas/paths';
-import { CasesSheet } from './CasesSheet';
-import { EventsSheet } from './EventsSheet';
-import { InvertersSheet } from './InvertersSheet';
+import { FurtherSheets } from './FurtherSheets';
 import { NowSheet } from './NowSheet';
-import { RadioSheet } from './RadioSheet';
 import { StandingSheet } from './StandingSheet';
-import { StringsSheet } from './StringsSheet';
-import { ZonesSheet } from './ZonesSheet';
 import { siteFinding } from './finding';
 import {
   asksForReading,
@@ -37,6 +32,11 @@ import {
   type KindWanted,
 } from './query';
 import { siteBoard } from '../../words/site';
+
+const Further = later(
+  async () => (await import('./FurtherSheets')).FurtherSheets,
+  import.meta.env.SSR ? FurtherSheets : null,
+);
 
 interface Props {
   initial: SitePage;
@@ -159,23 +159,16 @@ export function SiteBoard({ initial, events, kind: initialKind, cases, standing,
       </div>
       <div className="space-y-6">
         <NowSheet page={page} now={now} zone={zone} />
-        <CasesSheet site={id} initial={cases} />
-        <ZonesSheet zones={page.zones} now={now} timeZone={timeZone} zone={zone} />
-        <StringsSheet site={id} strings={page.strings} />
-        <TraceSheet siteId={id} timeZone={timeZone} />
-        <InvertersSheet inverters={page.inverters} now={now} timeZone={timeZone} zone={zone} />
-        <div className="grid items-start gap-6 xl:grid-cols-2">
-          <EventsSheet
-            site={id}
-            initial={events}
-            now={now}
-            timeZone={timeZone}
-            zone={zone}
-            kind={kind}
-            onKind={(wanted) => setView({ kind: wanted })}
-          />
-          <RadioSheet page={page} now={now} zone={zone} />
-        </div>
+        <Further
+          className="space-y-6"
+          page={page}
+          events={events}
+          cases={cases}
+          kind={kind}
+          onKind={(wanted) => setView({ kind: wanted })}
+          now={now}
+          zone={zone}
+        />
       </div>
     </>
   );

@@ -4,7 +4,7 @@ import { Button } from '../../components/ui/Button';
 import { Notice } from '../../components/ui/Notice';
 import { NotRead } from '../../components/ui/NotRead';
 import { Sheet } from '../../components/ui/Sheet';
-import { commandWords } from '../../domain/verdicts/event-words';
+import { commandWords } from '../../domain/verdicts/command-words';
 import { Staircase } from '../../drawings/Staircase';
 import { clockSeconds, fullTime } from '../../drawings/times';
 import type { StringPage } from '../../schemas/api/string';

@@ -1,5 +1,5 @@
 import { z } from 'zod';
-import type { TestResult } from '../../domain/commissioning/shutdown-test';
+import type { TestResult } from '../../domain/commissioning/test-results';
 import {
   CATEGORIES,
   LIGHTS,

@@ -1,5 +1,5 @@
 import type { Act, KeptAct } from '../../domain/commissioning/shutdown-test-record';
-import { WORST, type TestResult } from '../../domain/commissioning/shutdown-test';
+import { WORST, type TestResult } from '../../domain/commissioning/test-results';
 import type { SentAct, TestRow, ZoneStanding } from '../../schemas/api/shutdown-test';
 import type { Tx } from '../db/transaction';
 import { SITE_VISIBLE } from './visible-site';

@@ -1,6 +1,7 @@
 import { median } from '../../domain/output/robust';
 import { sunRiseSet } from '../../domain/photovoltaics/sun/rise-set';
-import { commandWords, eventWords } from '../../domain/verdicts/event-words';
+import { commandWords } from '../../domain/verdicts/command-words';
+import { eventWords } from '../../domain/verdicts/event-words';
 import type { ChartMark, StringHistory } from '../../schemas/api/string';
 import type { Tx } from '../db/transaction';
 import { AppError } from '../errors';

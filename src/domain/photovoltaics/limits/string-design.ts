@@ -1,5 +1,5 @@
 import { unitVoltageSaid as said } from '../../../words/domain-photovoltaics-limits';
-import { checkModuleType } from '../module/datasheet';
+import { checkModuleType } from '../module/check-type';
 import { wholeWithin } from '../range';
 import { moduleCount, type StringDesign } from './design';
 import { held, figure, type DesignFinding } from './design-finding';

@@ -1,7 +1,8 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import type { ModuleType } from '../../equipment/module-type';
-import { moduleFromDatasheet, vocOf } from './datasheet';
+import { moduleFromDatasheet } from './datasheet';
+import { vocOf } from './open-circuit';
 import { type DiodeReference, diodeParameters } from './diode-parameters';
 import { curvePoints, maximumPowerPoint, vocOfDiode } from './single-diode';
 
