@@ -43,7 +43,7 @@ export interface CauseSiteRow {
   gateways: { loggerId: number; number: number; name: string; lastHeardS: number | null }[];
   loggers: { name: string; lastSpokeS: number | null; connected: boolean }[];
   inputs: { inverter: string; number: number; current: number | null; atS: number | null }[]; // cA
-  /** Wh that a unit makes on a middling day of the last week; null: not known. */
+  /** Wh that a unit makes on a middling day of the last week, where any may be stuck; null: not known, or not asked for. */
   unitDayWh: number | null;
 }
 
@@ -100,15 +100,19 @@ async function concernedSites(
 ): Promise<Omit<CauseSiteRow, 'strings'>[]> {
   const { rows } = await tx.raw<{ rows: Omit<CauseSiteRow, 'strings'>[] }>(
     `with concerned as materialized (
-       select site.id, site.ref, site.name, site.report_interval_s from site
+       select site.id, site.ref, site.name, site.report_interval_s,
+              exists (select from string_judgement j where j.site_id = site.id
+                      and (j.stuck > 0 or j.finding is not null)) as stuck
+       from site
        where ${siteIds ? 'site.id = any (:siteIds)' : SITE_VISIBLE}
          and (${sound} or exists (select from string_judgement j where j.site_id = site.id
                      and (j.stuck > 0 or j.not_shutting_down > 0 or j.unconfirmed > 0 or j.silent > 0
                           or j.finding is not null))))
      select c.id, c.ref, c.name, c.report_interval_s as "reportIntervalS",
-            (select percentile_cont(0.5) within group (order by d.energy::float8 / s.slots)
-             from string_day d join string s on s.id = d.string_id
-             where d.site_id = c.id and d.day >= current_date - 8 and d.energy > 0) as "unitDayWh",
+            case when c.stuck then
+              (select percentile_cont(0.5) within group (order by d.energy::float8 / s.slots)
+               from string_day d join string s on s.id = d.string_id
+               where d.site_id = c.id and d.day >= current_date - 8 and d.energy > 0) end as "unitDayWh",
             coalesce((select json_agg(json_build_object('name', z.name, 'inForce',
                         (select in_force from command where site_id = c.id and zone_id = z.id order by since desc limit 1)))
                       from zone z where z.site_id = c.id), '[]') as zones,

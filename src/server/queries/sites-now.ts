@@ -112,7 +112,8 @@ async function partsOf(tx: Tx, siteIds: readonly number[]): Promise<Parts> {
                 where ${here}) newest
           where in_force <> 'released'`,
        )} as said`,
-    { siteIds: [...siteIds] },
+    // as text: it stands there ten times, and the driver would quote each number
+    { siteIds: `{${siteIds.join(',')}}` },
   );
   const [parts] = rows;
   if (!parts) throw new Error('A statement without a from has one row.');
