@@ -1,7 +1,7 @@
 import { MODULE_TYPES, UNIT_TYPES } from './catalogue';
 import { HARBOURLINE_SITES, LOWFIELD_SITES, type DemoSite } from './demo-sites';
 import { layOut } from './lay-out';
-import { PLACES, placeAtHour } from './places';
+import { placesAtHours } from './places';
 import type { FleetPlan, SitePlan } from '../plant/plan';
 
 export const DEMO_SEED = 20_261_201;
@@ -13,9 +13,15 @@ export const DEMO_SEED = 20_261_201;
  * some sites are always in daylight. The same arguments give the same fleet.
  */
 export function demoFleet(seed: number, since: number): FleetPlan {
-  const free = [...PLACES];
-  const at = ({ hour, spec }: DemoSite): SitePlan => {
-    const site = layOut(spec, placeAtHour(free, since, hour), { modules: MODULE_TYPES, units: UNIT_TYPES });
+  const all = [...LOWFIELD_SITES, ...HARBOURLINE_SITES];
+  const places = placesAtHours(
+    since,
+    all.map((s) => s.hour),
+  );
+  const at = (demo: DemoSite): SitePlan => {
+    const place = places[all.indexOf(demo)];
+    if (!place) throw new Error(`The demo has no place for "${demo.spec.name}".`);
+    const site = layOut(demo.spec, place, { modules: MODULE_TYPES, units: UNIT_TYPES });
     const logger = site.loggers[0]?.serial ?? '';
     // A preset fault of a gateway means the site's own logger.
     site.faults = site.faults.map((f) =>

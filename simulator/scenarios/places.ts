@@ -19,7 +19,10 @@ export const PLACES: Place[] = [
   spot('Pecan Ferry', 29.6, -96.1, 'America/Chicago', 40, [21, 8, 6]),
   spot('Puerto Junco', -12.2, -76.9, 'America/Lima', 90, [20, 3, 4]),
   spot('Quebrada Honda', -29.8, -70.9, 'America/Santiago', 210, [16, 4, 6]),
+  spot('Bois Mahaut', 15.4, -61.4, 'America/Dominica', 120, [26, 1.5, 3]),
+  spot('Crique Sable', 4.9, -52.6, 'America/Cayenne', 20, [26, 1, 4]),
   spot('Campo Novo do Vale', -20.4, -47.3, 'America/Sao_Paulo', 820, [22, 3, 6]),
+  spot('Lagoa do Cajueiro', -7.6, -35.3, 'America/Recife', 90, [26, 1.5, 4]),
   spot('Ribeira Funda', 15.1, -23.5, 'Atlantic/Cape_Verde', 70, [24, 2.5, 3]),
   spot('Moinho Velho', 37.4, -8.2, 'Europe/Lisbon', 110, [17, 6, 6]),
   spot('Adansi Cross', 6.2, -1.4, 'Africa/Accra', 240, [26, 1.5, 4]),
@@ -56,16 +59,45 @@ function spot(
 export const solarHour = (epochS: number, longitude: number): number =>
   (((epochS / 3600 + longitude / 15) % 24) + 24) % 24;
 
+/** Hours between two moments of a day, the shorter way round. */
+function apart(a: number, b: number): number {
+  const d = Math.abs(a - b);
+  return Math.min(d, 24 - d);
+}
+
 /** The free place where the sun stands nearest to `hour` at that moment; it is taken out of `free`. */
 export function placeAtHour(free: Place[], epochS: number, hour: number): Place {
   let best = 0;
   let distance = Infinity;
   free.forEach((p, i) => {
-    const d = Math.abs(solarHour(epochS, p.longitude) - hour);
-    const around = Math.min(d, 24 - d);
-    if (around < distance) [best, distance] = [i, around];
+    const d = apart(solarHour(epochS, p.longitude), hour);
+    if (d < distance) [best, distance] = [i, d];
   });
   const [taken] = free.splice(best, 1);
   if (!taken) throw new Error('No place is left for another site.');
   return taken;
+}
+
+/**
+ * A place of its own for each of `hours` (in their order): the sun stands near all of them at that moment, no one is
+ * pushed far off for another's sake. Places are exchanged until no exchange brings the squares of the distances down.
+ */
+export function placesAtHours(epochS: number, hours: readonly number[]): Place[] {
+  const places = [...PLACES];
+  if (hours.length > places.length) throw new Error('There are more sites than places.');
+  const cost = (i: number, place: Place | undefined): number => {
+    const hour = hours[i];
+    return hour === undefined || !place ? 0 : apart(solarHour(epochS, place.longitude), hour) ** 2;
+  };
+  for (let better = true; better;) {
+    better = false;
+    for (let i = 0; i < hours.length; i++)
+      for (let j = i + 1; j < places.length; j++) {
+        const [a, b] = [places[i], places[j]];
+        if (!a || !b || cost(i, b) + cost(j, a) >= cost(i, a) + cost(j, b) - 1e-9) continue;
+        [places[i], places[j]] = [b, a];
+        better = true;
+      }
+  }
+  return places.slice(0, hours.length);
 }

@@ -3,6 +3,7 @@ import { join } from 'node:path';
 import { describe, expect, it } from 'vitest';
 import { unitsOf } from '../plant/plan';
 import { DEMO_SEED, demoFleet, demoSite } from './demo';
+import { HARBOURLINE_SITES, LOWFIELD_SITES } from './demo-sites';
 import { solarHour } from './places';
 import { readScenario, scenarioFleet } from './read';
 import { loggerToken } from './tokens';
@@ -35,24 +36,28 @@ describe('the demo fleet', () => {
     for (const serial of serials) expect(serial).toMatch(/^[A-Z0-9][A-Z0-9-]{3,31}$/);
   });
 
-  it.each([0, 3, 6, 9, 12, 15, 18, 21])(
-    'at %i h UTC: the hall at mid-morning, and somewhere day at any time',
-    (hour) => {
-      const since = Date.UTC(2026, 11, 1, hour) / 1000;
-      const laidOut = demoFleet(DEMO_SEED, since).organisations.flatMap((o) => o.sites);
-      const hall = laidOut.find((s) => s.stage === 'commissioning');
-      const atHall = solarHour(since, hall?.longitude ?? 0);
-      expect(atHall).toBeGreaterThan(8.5);
-      expect(atHall).toBeLessThan(11.8);
-      for (let later = 0; later < 24; later++) {
-        const day = laidOut.filter((s) => {
-          const h = solarHour(since + later * 3600, s.longitude);
-          return h > 7.5 && h < 16.5;
-        });
-        expect(day.length).toBeGreaterThan(0);
-      }
-    },
-  );
+  const halfHours = Array.from({ length: 48 }, (_, k) => k / 2);
+  it.each(halfHours)('begun at %f h UTC: each site stands near the hour of its story', (hour) => {
+    const since = Date.UTC(2026, 11, 1) / 1000 + hour * 3600;
+    const laidOut = demoFleet(DEMO_SEED, since).organisations.flatMap((o) => o.sites);
+    for (const { hour: wanted, spec } of [...LOWFIELD_SITES, ...HARBOURLINE_SITES]) {
+      const there = solarHour(since, laidOut.find((s) => s.name === spec.name)?.longitude ?? 0);
+      expect([spec.name, Math.abs(there - wanted) < 2]).toEqual([spec.name, true]);
+    }
+    expect(new Set(laidOut.map((s) => `${s.latitude} ${s.longitude}`)).size).toBe(laidOut.length);
+  });
+
+  it.each(halfHours)('begun at %f h UTC: it is day somewhere at any time', (hour) => {
+    const since = Date.UTC(2026, 11, 1) / 1000 + hour * 3600;
+    const laidOut = demoFleet(DEMO_SEED, since).organisations.flatMap((o) => o.sites);
+    for (let later = 0; later < 24; later++) {
+      const day = laidOut.filter((s) => {
+        const h = solarHour(since + later * 3600, s.longitude);
+        return h > 7.5 && h < 16.5;
+      });
+      expect(day.length).toBeGreaterThan(0);
+    }
+  });
 
   it('names only what it defines: planes, inputs, zones, gateways, fault places', () => {
     for (const site of sites) {

@@ -24,6 +24,16 @@ export interface JobToKill {
 /** One that the clock asked for a moment before counts as well: a queue does one at a time. */
 const justBefore = (from: Date): Date => new Date(from.getTime() - 5000);
 
+/**
+ * Waits for the middle of a minute. At its turn the clock asks for jobs: two of those that come to the locked tables
+ * first would be all that the worker does at a time.
+ */
+async function betweenMinutes(): Promise<void> {
+  const second = (Date.now() / 1000) % 60;
+  const wait = second < 5 ? 5 - second : second > 50 ? 65 - second : 0;
+  await new Promise((resolve) => setTimeout(resolve, wait * 1000));
+}
+
 /** A worker as a process of its own, killed in the middle of jobs; another one then does them again. */
 export class KilledWorker {
   /** Kinds of job that were killed and done. */
@@ -95,6 +105,7 @@ export class KilledWorker {
     half: () => Promise<void>,
     scene: () => Promise<void> = () => Promise.resolve(),
   ): Promise<void> {
+    await betweenMinutes();
     const lock = new pg.Client(this.db.url);
     await lock.connect();
     try {

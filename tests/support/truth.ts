@@ -11,7 +11,7 @@ import {
   UNIT_TYPES,
 } from '../../simulator/scenarios/catalogue';
 import { layOut, type Block, type SiteSpec } from '../../simulator/scenarios/lay-out';
-import { PLACES, placeAtHour, type Place } from '../../simulator/scenarios/places';
+import { PLACES, placeAtHour } from '../../simulator/scenarios/places';
 import type { UnitState, Verdict } from '../../src/domain/verdicts/codes';
 
 /** Small sites of every kind of unit, for holding Wakeline's conclusions against the simulator's truth. */
@@ -29,16 +29,13 @@ const climate = { clearShare: 1, cloudyShare: 0, fairToday: true };
 
 /** A fleet of these sites, where it is morning: the light outlasts a test's hours. */
 export function truthFleet(since: number, sites: readonly TruthSite[]): FleetPlan {
-  const free = [...PLACES];
-  const places = new Map<TruthKind, Place>();
+  const place = placeAtHour([...PLACES], since, 9.5);
   const site = (
-    { name, kind }: TruthSite,
+    { name }: TruthSite,
     unitType: string,
     blocks: Partial<Block>[],
     more: Partial<SiteSpec> = {},
   ): SitePlan => {
-    const place = places.get(kind) ?? placeAtHour(free, since, 9.5);
-    places.set(kind, place);
     return layOut(
       {
         name,

@@ -53,7 +53,10 @@ export function isQuiet(at: Date, quiet: QuietHours | null, timeZone: string): b
     : minute >= quiet.from || minute < quiet.to;
 }
 
-/** The first whole minute from `at` on that is not quiet; `at` itself where it is not. */
+/**
+ * The first whole minute from `at` on that is not quiet; `at` itself where it is not. Where all minutes that are not
+ * quiet fall into the hour that a day does not have, they are the next day's.
+ */
 export function quietUntil(at: Date, quiet: QuietHours | null, timeZone: string): Date {
   if (!quiet || !isQuiet(at, quiet, timeZone)) return at;
   const quietAt = (t: number) => isQuiet(new Date(t), quiet, timeZone);
