@@ -1,4 +1,4 @@
-import { lazy, type ComponentType, type LazyExoticComponent } from 'react';
+import { lazy, useEffect, type ComponentType, type LazyExoticComponent } from 'react';
 
 const TRIES = 4;
 const FIRST_WAIT_MS = 400;
@@ -18,3 +18,14 @@ export async function patiently<T>(load: () => Promise<T>): Promise<T> {
 export const late = <P extends object>(
   load: () => Promise<ComponentType<P>>,
 ): LazyExoticComponent<ComponentType<P>> => lazy(async () => ({ default: await patiently(load) }));
+
+/**
+ * Brings code soon after the page is alive, for parts that a person comes to next, perhaps without a network.
+ * @param loads one list for all times
+ */
+export function useSoon(loads: readonly (() => Promise<unknown>)[]): void {
+  useEffect(() => {
+    // what does not come now is asked for again where it is shown, and the fault is told there
+    for (const load of loads) patiently(load).catch(() => undefined);
+  }, [loads]);
+}

@@ -82,12 +82,15 @@ export const sharedReadingsSheets = {
   n144HalfCellsAbout: '144 half cells, about 550 W',
 };
 
-export const sharedReadingsWords = {
-  spokenPercent: (percent: string) => percent.replace('\u00a0%', ' per cent'),
-  spokenMinus: (figure: string) => figure.replace('−', 'minus '),
+export const sharedReadingsKinds = {
   shutdownOnly: 'Shutdown-only',
   monitored: 'Monitored',
   optimizing: 'Optimizing',
+};
+
+export const sharedReadingsWords = {
+  spokenPercent: (percent: string) => percent.replace('\u00a0%', ' per cent'),
+  spokenMinus: (figure: string) => figure.replace('−', 'minus '),
   bright: 'bright',
   dull: 'dull',
   snow: 'snow',

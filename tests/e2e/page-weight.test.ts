@@ -6,20 +6,13 @@ const WITHOUT_CHART = 95_000;
 const WITH_CHART = 290_000;
 /** Pages that are still above the aim, and what they may weigh: a line may only shrink or go. */
 const STILL_ABOVE: Readonly<Record<string, number>> = {
-  'capture/[site].astro': 123_000,
-  'capture/index.astro': 123_000,
-  'cases/[case].astro': 106_000,
-  'commissioning/[site]/checks.astro': 110_000,
-  'commissioning/[site]/readings.astro': 109_000,
-  'commissioning/[site]/roll-call.astro': 104_000,
-  'commissioning/[site]/shutdown-test/[test].astro': 117_000,
-  'methods.astro': 114_000,
-  'try-a-reading.astro': 96_000,
+  'commissioning/[site]/checks.astro': 101_000,
+  'commissioning/[site]/readings.astro': 97_500,
 };
 /** The same of pages with a chart, all in all. */
 const STILL_ABOVE_WITH_CHART: Readonly<Record<string, number>> = {
-  'commissioning/[site]/membership.astro': 302_000,
-  'sites/[site]/strings/[string].astro': 315_000,
+  'commissioning/[site]/membership.astro': 294_500,
+  'sites/[site]/strings/[string].astro': 304_000,
 };
 /** Before the chart comes. */
 const BEFORE_CHART = 120_000;

@@ -9,8 +9,7 @@ import {
   MarkPointComponent,
   TooltipComponent,
 } from 'echarts/components';
-import * as echarts from 'echarts/core';
-import type { ECharts } from 'echarts/core';
+import { dispose, getInstanceByDom, init, use as bring, type ECharts } from 'echarts/core';
 import { CanvasRenderer } from 'echarts/renderers';
 import { useCallback, useEffect, useMemo, useRef, useState, type PointerEvent } from 'react';
 import { onThemeChange, readColours } from './colours';
@@ -18,7 +17,7 @@ import { fromWall, toWall } from './local-time';
 import type { ChartModel } from './model';
 import { chartOptions, gridOf } from './options';
 
-echarts.use([
+bring([
   LineChart,
   GridComponent,
   TooltipComponent,
@@ -29,6 +28,9 @@ echarts.use([
   DataZoomInsideComponent,
   CanvasRenderer,
 ]);
+
+/** What React's part of it calls; the whole of it would bring what no chart of ours has. */
+const echarts = { dispose, getInstanceByDom, init };
 
 export interface Span {
   from: number;

@@ -1,6 +1,7 @@
 import type { Interpretation } from '../../domain/readings/interpret';
 import type { ReadingQuestion } from '../../domain/readings/reading';
 import { Comb } from '../../drawings/Comb';
+import { later } from '../../lib/later';
 import { Sheet } from '../ui/Sheet';
 import { Tag, type Tone } from '../ui/Tag';
 import { likelyComb } from './likely-comb';
@@ -8,6 +9,12 @@ import { PAINT } from './paint';
 import type { Faults } from './form';
 import { chance, helpWords, hueOf, initiatorWords, outcomeWords, reasoning, shownHypotheses } from './words';
 import { answerSheet } from '../../words/shared-readings';
+
+/** Drawings say what the words beside them say: they may come after. */
+const Units = later(
+  async () => (await import('../../drawings/Comb')).Comb,
+  import.meta.env.SSR ? Comb : null,
+);
 
 interface Props {
   answer: Interpretation | null;
@@ -61,7 +68,7 @@ export function AnswerSheet({ answer, question, waiting, faults }: Props) {
             </div>
             {comb && (
               <div aria-hidden="true" className="mt-1.5">
-                <Comb id={`likely-${h.kind}-${h.count}`} slots={comb} width={320} height={16} />
+                <Units id={`likely-${h.kind}-${h.count}`} slots={comb} width={320} height={16} />
               </div>
             )}
             {h.asExpected && h !== best && (

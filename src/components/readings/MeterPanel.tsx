@@ -2,17 +2,8 @@ import { useState } from 'react';
 import { Field } from '../ui/Field';
 import { Segmented } from '../ui/Segmented';
 import { NumberPad } from './NumberPad';
-import {
-  COMMANDED,
-  FIELD_AT,
-  LIGHTS,
-  METERS,
-  PLACES,
-  chosen,
-  pressed,
-  type PanelProps,
-  type Place,
-} from './form';
+import { pressed, type PanelProps } from './form';
+import { COMMANDED, FIELD_AT, LIGHTS, METERS, PLACES, chosen, type Place } from './form-choices';
 import { LIGHT_LABELS, METER_LABELS, PLACE_LABELS, commandedLabels } from './words';
 import { meterPanel } from '../../words/shared-readings';
 

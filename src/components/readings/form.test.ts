@@ -2,19 +2,8 @@ import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { interpretReading } from '../../domain/readings/interpret';
 import { addressOf } from '../../lib/view-in-url';
-import {
-  COMMANDED,
-  DEFAULTS,
-  LIGHTS,
-  METERS,
-  PLACES,
-  formOf,
-  othersOf,
-  othersText,
-  pressed,
-  readForm,
-  type ReadingForm,
-} from './form';
+import { formOf, othersOf, othersText, pressed, readForm } from './form';
+import { COMMANDED, DEFAULTS, LIGHTS, METERS, PLACES, type ReadingForm } from './form-choices';
 import { SHEET_KEYS } from './sheets';
 import { scaleOf } from './scale';
 import {

@@ -2,7 +2,8 @@ import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { interpretReading } from '../../domain/readings/interpret';
 import { conditionOf } from '../../drawings/condition';
-import { DEFAULTS, readForm } from './form';
+import { readForm } from './form';
+import { DEFAULTS } from './form-choices';
 import { likelyComb } from './likely-comb';
 
 const questionOf = (some: Partial<typeof DEFAULTS>) => readForm({ ...DEFAULTS, v: '7.8', ...some }).question!;

@@ -2,18 +2,14 @@ import { UNIT_KINDS } from '../../domain/equipment/unit-type';
 import type { Help, Interpretation, RankedHypothesis } from '../../domain/readings/interpret';
 import { expectedState, type ReadingQuestion } from '../../domain/readings/reading';
 import { number, percent, volts } from '../../drawings/numbers';
-import { chosen, type Place, type ReadingForm } from './form';
+import { chosen, type Place, type ReadingForm } from './form-choices';
+import { KIND_LABELS } from './kind-labels';
 import { SHEET_KEYS, SHEETS } from './sheets';
 import { sharedReadingsWords } from '../../words/shared-readings';
 import { capital } from '../../words/domain-counts';
 
 /** An answer in plain words: what a person on a roof reads or is read. */
 
-export const KIND_LABELS = {
-  shutdown_only: sharedReadingsWords.shutdownOnly,
-  monitored: sharedReadingsWords.monitored,
-  optimizing: sharedReadingsWords.optimizing,
-} as const;
 export const LIGHT_LABELS = {
   bright: sharedReadingsWords.bright,
   dull: sharedReadingsWords.dull,

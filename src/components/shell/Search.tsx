@@ -1,47 +1,10 @@
-import { useEffect, useId, useRef, useState, type KeyboardEvent } from 'react';
-import { api, ApiError } from '../../lib/api';
-import type { SearchReply } from '../../schemas/api/search';
+import { Suspense, useEffect, useId, useRef, useState, type KeyboardEvent } from 'react';
+import { late } from '../../lib/late';
 import { paths } from '../../schemas/paths';
 import { shellSearch } from '../../words/shell';
+import type { Found } from './SearchFound';
 
-type Result = SearchReply['results'][number];
-const KIND: Record<Result['kind'], string> = {
-  site: shellSearch.site,
-  string: shellSearch.string,
-  unit: shellSearch.unit,
-};
-
-const NOTHING = { q: '', results: [], note: '' };
-
-/** Asks as the person types, a little behind; an answer to an older question is dropped. */
-function useFound(q: string): { results: Result[]; note: string } {
-  const [found, setFound] = useState<{ q: string; results: Result[]; note: string }>(NOTHING);
-  useEffect(() => {
-    if (q.length < 2) return;
-    const stop = new AbortController();
-    const timer = setTimeout(() => {
-      api<SearchReply>(paths.api.search(), { query: { q }, signal: stop.signal })
-        .then(({ results }) =>
-          setFound({
-            q,
-            results,
-            note: results.length
-              ? shellSearch.resultsFound(results.length)
-              : shellSearch.nothingHereIsCalled(q),
-          }),
-        )
-        .catch((error: unknown) => {
-          if (error instanceof ApiError) setFound({ q, results: [], note: error.message });
-        });
-    }, 150);
-    return () => {
-      clearTimeout(timer);
-      stop.abort();
-    };
-  }, [q]);
-  // while the next answer is on its way the last one stands
-  return q.length < 2 ? NOTHING : found;
-}
+const SearchFound = late(async () => (await import('./SearchFound')).SearchFound);
 
 /** Finds a site, string or serial from anywhere. Without scripts the form filters the fleet. */
 export function Search() {
@@ -50,7 +13,8 @@ export function Search() {
   const [open, setOpen] = useState(false);
   const input = useRef<HTMLInputElement>(null);
   const listId = useId();
-  const { results, note } = useFound(typed.trim());
+  const [{ results, note }, setFound] = useState<Found>({ results: [], note: '' });
+  const [asked, setAsked] = useState(false);
 
   useEffect(() => {
     const onSlash = (event: globalThis.KeyboardEvent) => {
@@ -102,12 +66,13 @@ export function Search() {
         placeholder={shellSearch.findASiteString}
         role="combobox"
         aria-expanded={showing}
-        aria-controls={listId}
+        aria-controls={asked ? listId : undefined}
         aria-autocomplete="list"
         aria-activedescendant={showing && chosen >= 0 ? `${listId}-${chosen}` : undefined}
         value={typed}
         onChange={(event) => {
           setTyped(event.target.value);
+          setAsked(true);
           setChosen(-1);
           setOpen(true);
         }}
@@ -120,37 +85,11 @@ export function Search() {
       >
         /
       </kbd>
-      <div
-        hidden={!showing}
-        className="absolute right-0 z-40 mt-1 w-[min(420px,calc(100vw-32px))] border border-t-2 border-rule border-t-ink bg-sheet"
-      >
-        <ul id={listId} role="listbox" aria-label={shellSearch.found}>
-          {results.map((result, i) => (
-            <li
-              key={`${result.kind} ${result.href} ${result.label}`}
-              id={`${listId}-${i}`}
-              role="option"
-              aria-selected={i === chosen}
-              className={`border-b border-rule-faint ${i === chosen ? 'bg-petrol-wash' : ''}`}
-            >
-              <a
-                href={result.href}
-                tabIndex={-1}
-                className="flex min-h-[44px] items-center gap-3 px-3 py-1.5 hover:bg-petrol-wash"
-              >
-                <span className="w-10 shrink-0 text-xs text-ink-2">{KIND[result.kind]}</span>
-                <span className="min-w-0">
-                  <span className="font-semibold">{result.label}</span>{' '}
-                  <span className="text-sm text-ink-2">{result.where}</span>
-                </span>
-              </a>
-            </li>
-          ))}
-        </ul>
-        <p role="status" className="px-3 py-2 text-sm text-ink-2">
-          {note}
-        </p>
-      </div>
+      {asked && (
+        <Suspense>
+          <SearchFound q={typed.trim()} open={showing} listId={listId} chosen={chosen} onFound={setFound} />
+        </Suspense>
+      )}
     </form>
   );
 }

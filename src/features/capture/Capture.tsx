@@ -1,20 +1,27 @@
-import { useCallback, useEffect, useRef, useState } from 'react';
+import { Suspense, useCallback, useEffect, useRef, useState, type RefObject } from 'react';
 import { overlaid } from '../../lib/capture-records';
 import { ofPerson } from '../../lib/capture-queue';
+import { late, useSoon } from '../../lib/late';
 import { useViewInUrl } from '../../lib/view-in-url';
 import type { CaptureSnapshot } from '../../schemas/api/capture';
 import { Segmented } from '../../components/ui/Segmented';
-import { CheckScreen } from './CheckScreen';
 import { Head } from './Head';
-import { KeptSites, NotHere } from './Shell';
-import { ReadingScreen } from './ReadingScreen';
 import { StringList } from './StringList';
-import { WaitingScreen } from './WaitingScreen';
 import { useCaptureWorker } from './use-worker';
 import { usePhone } from './use-phone';
 import { VIEW_DEFAULTS, forString, viewOf, type CaptureView } from './view';
 import { countAndKind } from './words';
 import { capture } from '../../words/capture';
+
+const reading = async () => (await import('./ReadingScreen')).ReadingScreen;
+const checks = async () => (await import('./CheckScreen')).CheckScreen;
+const waiting = async () => (await import('./WaitingScreen')).WaitingScreen;
+const KeptSites = late(async () => (await import('./Shell')).KeptSites);
+const NotHere = late(async () => (await import('./Shell')).NotHere);
+const ReadingScreen = late(reading);
+const CheckScreen = late(checks);
+const WaitingScreen = late(waiting);
+const SCREENS = [reading, checks, waiting];
 
 interface Props {
   /** From the server; null: this is the shell, and what the phone keeps has to do. */
@@ -42,6 +49,18 @@ function useClock(first: string | null): Date {
   return clock;
 }
 
+/** Another screen is there: it begins at its top, for the keyboard as well. */
+function Arrival({ place, screen }: { place: string; screen: RefObject<HTMLDivElement | null> }) {
+  const shown = useRef(place);
+  useEffect(() => {
+    if (shown.current === place) return;
+    shown.current = place;
+    window.scrollTo({ top: 0 });
+    screen.current?.querySelector<HTMLElement>('h1')?.focus({ preventScroll: true });
+  }, [place, screen]);
+  return null;
+}
+
 /** The phone's page of a site: readings and install checks, with and without a network. */
 export function Capture({ initial, search }: Props) {
   const [site] = useState(() => initial?.site.id ?? siteInAddress());
@@ -51,6 +70,7 @@ export function Capture({ initial, search }: Props) {
   const clock = useClock(initial?.at ?? null);
   const [said, say] = useState('');
   useCaptureWorker();
+  useSoon(SCREENS);
 
   const screen = useRef<HTMLDivElement>(null);
   const change = useCallback(
@@ -58,14 +78,6 @@ export function Capture({ initial, search }: Props) {
     [changeView],
   );
   const place = `${view.string} ${view.part}`;
-  const shown = useRef(place);
-  useEffect(() => {
-    if (shown.current === place) return;
-    shown.current = place;
-    window.scrollTo({ top: 0 });
-    screen.current?.querySelector<HTMLElement>('h1')?.focus({ preventScroll: true });
-  }, [place]);
-
   const { snapshot, here } = state;
   if (!snapshot) {
     return (
@@ -80,7 +92,7 @@ export function Capture({ initial, search }: Props) {
           said=""
         />
         <main id="main" tabIndex={-1} className="pt-5 outline-none" ref={screen}>
-          {site ? <NotHere state={state} /> : <KeptSites phone={phone} state={state} />}
+          <Suspense>{site ? <NotHere state={state} /> : <KeptSites phone={phone} state={state} />}</Suspense>
         </main>
       </div>
     );
@@ -129,10 +141,13 @@ export function Capture({ initial, search }: Props) {
             </button>
           </div>
         )}
-        {part === 'list' && <StringList {...props} />}
-        {part === 'readings' && string && <ReadingScreen key={string.id} {...props} string={string} />}
-        {part === 'checks' && string && <CheckScreen key={string.id} {...props} string={string} />}
-        {part === 'waiting' && <WaitingScreen {...props} />}
+        <Suspense>
+          {part === 'list' && <StringList {...props} />}
+          {part === 'readings' && string && <ReadingScreen key={string.id} {...props} string={string} />}
+          {part === 'checks' && string && <CheckScreen key={string.id} {...props} string={string} />}
+          {part === 'waiting' && <WaitingScreen {...props} />}
+          <Arrival place={place} screen={screen} />
+        </Suspense>
       </main>
     </div>
   );

@@ -1,7 +1,7 @@
 import { useState } from 'react';
 import { checkDefinition } from '../../domain/commissioning/checks/list';
 import { STAGE_WORDS } from '../../words/domain-reading-stages';
-import { FIELD_AT } from '../../components/readings/form';
+import { FIELD_AT } from '../../components/readings/form-choices';
 import { Button } from '../../components/ui/Button';
 import { volts } from '../../drawings/numbers';
 import { corrected, kept, type Waiting } from '../../lib/capture-queue';

@@ -5,7 +5,7 @@ import { READING_KINDS, type ReadingStage } from '../../domain/commissioning/rea
 import { KIND_WORDS, STAGE_WORDS } from '../../words/domain-reading-stages';
 import { Button } from '../../components/ui/Button';
 import { Sheet } from '../../components/ui/Sheet';
-import { FIELD_AT } from '../../components/readings/form';
+import { FIELD_AT } from '../../components/readings/form-choices';
 import { volts } from '../../drawings/numbers';
 import { clockOrDate } from '../../drawings/times';
 import type { ShownReading } from '../../lib/capture-records';

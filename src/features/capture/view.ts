@@ -18,7 +18,7 @@ import {
   chosen,
   type Place,
   type ReadingForm,
-} from '../../components/readings/form';
+} from '../../components/readings/form-choices';
 import type { CaptureSnapshot, CaptureString } from '../../schemas/api/capture';
 
 /** What the phone shows and what is typed on it, kept in the address: a reload loses nothing. All text. */

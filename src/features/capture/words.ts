@@ -1,5 +1,5 @@
 import { UNIT_KINDS } from '../../domain/equipment/unit-type';
-import { KIND_LABELS } from '../../components/readings/words';
+import { KIND_LABELS } from '../../components/readings/kind-labels';
 import { siteClock } from '../../components/ui/reader-zone';
 import type { PhoneState } from '../../lib/capture-phone';
 import { tally } from '../../lib/capture-queue';

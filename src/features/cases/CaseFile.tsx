@@ -1,5 +1,5 @@
-import { useState } from 'react';
-import { Button, ButtonLink } from '../../components/ui/Button';
+import { Suspense, useState } from 'react';
+import { ButtonLink } from '../../components/ui/Button';
 import { Heading } from '../../components/ui/Heading';
 import { LiveMark } from '../../components/ui/Live';
 import { NotRead } from '../../components/ui/NotRead';
@@ -8,17 +8,33 @@ import { Sheet } from '../../components/ui/Sheet';
 import { isClosed } from '../../domain/cases/cases';
 import { CASE_STATE_WORDS, CHECK_OUTCOME_WORDS } from '../../words/domain-cases';
 import type { CasePage } from '../../schemas/api/cases';
+import { late } from '../../lib/late';
+import { later } from '../../lib/later';
 import { paths } from '../../schemas/paths';
 import { ChecklistSheet } from './ChecklistSheet';
 import { FactsSheet } from './FactsSheet';
 import { FiguresSheet } from './FiguresSheet';
-import { Entry, HistorySheet } from './HistorySheet';
+import { HistorySheet } from './HistorySheet';
 import { PhotosSheet } from './PhotosSheet';
-import { useCase, type CaseInHand } from './query';
+import { useCase } from './query';
 import { useKeys } from './use-keys';
 import { WhatSheet } from './WhatSheet';
 import { dueWords } from './words';
 import { caseFile } from '../../words/cases';
+
+const Figures = later(
+  async () => (await import('./FiguresSheet')).FiguresSheet,
+  import.meta.env.SSR ? FiguresSheet : null,
+);
+const History = later(
+  async () => (await import('./HistorySheet')).HistorySheet,
+  import.meta.env.SSR ? HistorySheet : null,
+);
+const Photos = later(
+  async () => (await import('./PhotosSheet')).PhotosSheet,
+  import.meta.env.SSR ? PhotosSheet : null,
+);
+const MeanwhileNotice = late(async () => (await import('./MeanwhileNotice')).MeanwhileNotice);
 
 /** What follows from how a case stands, in a sentence. */
 function sentenceOf({ case: c }: CasePage): string {
@@ -65,7 +81,11 @@ export function CaseFile({ initial }: { initial: CasePage }) {
       <NotRead error={error} title={caseFile.theCaseCouldNot} onRetry={() => refetch()} className="mb-4">
         {caseFile.whatIsShownMay}
       </NotRead>
-      {meanwhile && <MeanwhileNotice hand={hand} />}
+      {meanwhile && (
+        <Suspense>
+          <MeanwhileNotice hand={hand} />
+        </Suspense>
+      )}
       {send.error && !meanwhile && (
         <div className="mb-4">
           <Notice kind="failed" title={send.error.title}>
@@ -82,20 +102,14 @@ export function CaseFile({ initial }: { initial: CasePage }) {
           <div className="order-3 min-w-0">
             <ChecklistSheet hand={hand} />
           </div>
-          <div className="order-5 min-w-0 empty:hidden">
-            <FiguresSheet page={page} />
-          </div>
-          <div className="order-6 min-w-0">
-            <HistorySheet hand={hand} />
-          </div>
+          <Figures page={page} className="order-5 min-w-0 empty:hidden" />
+          <History hand={hand} className="order-6 min-w-0" />
         </div>
         <div className="contents lg:grid lg:min-w-0 lg:gap-6">
           <div className="order-2 min-w-0">
             <FactsSheet hand={hand} />
           </div>
-          <div className="order-4 min-w-0">
-            <PhotosSheet hand={hand} />
-          </div>
+          <Photos hand={hand} className="order-4 min-w-0" />
           <div className="order-7 min-w-0">
             <Sheet id="pack" title={caseFile.forWhoeverIsCalled}>
               <p className="mb-3 text-ink-2">{caseFile.whatIsWrongThe}</p>
@@ -112,32 +126,5 @@ export function CaseFile({ initial }: { initial: CasePage }) {
         </div>
       </div>
     </>
-  );
-}
-
-/** Somebody else was first: what they did, and the choice to send the own change over it. */
-function MeanwhileNotice({ hand }: { hand: CaseInHand }) {
-  const { meanwhile, forget, page, send } = hand;
-  if (!meanwhile) return null;
-  return (
-    <div
-      role="alert"
-      className="mb-5 border-l-0 border-t-2 border-t-rust bg-rust-wash px-[18px] py-4 text-rust-ink"
-    >
-      <p className="font-medium">{meanwhile.message}</p>
-      {meanwhile.since.length > 0 && (
-        <ul className="mt-2 bg-sheet px-3 text-ink">
-          {meanwhile.since.map((entry) => (
-            <Entry key={entry.id} entry={entry} now={page.at} timeZone={page.case.timeZone} />
-          ))}
-        </ul>
-      )}
-      <div className="mt-3 flex flex-wrap gap-2">
-        <Button weight="primary" disabled={send.isPending} onClick={meanwhile.again}>
-          {caseFile.sendMineOverIt}
-        </Button>
-        <Button onClick={forget}>{caseFile.leaveItAsIt}</Button>
-      </div>
-    </div>
   );
 }

@@ -1,4 +1,4 @@
-import { useState } from 'react';
+import { Suspense, useState } from 'react';
 import { Choice } from '../../components/ui/Choice';
 import { Field } from '../../components/ui/Field';
 import { Sheet } from '../../components/ui/Sheet';
@@ -6,17 +6,20 @@ import { Tag } from '../../components/ui/Tag';
 import { RelativeTime } from '../../components/ui/Time';
 import { CASE_KINDS, CASE_STATES, isClosed, type CaseState } from '../../domain/cases/cases';
 import { CASE_KIND_WORDS, CASE_ORIGIN_WORDS, CASE_STATE_WORDS } from '../../words/domain-cases';
+import { late } from '../../lib/late';
 import { paths } from '../../schemas/paths';
-import { MoveDialog } from './MoveDialog';
 import type { CaseInHand } from './query';
 import { dueWords } from './words';
 import { factsSheet } from '../../words/cases';
+
+const MoveDialog = late(async () => (await import('./MoveDialog')).MoveDialog);
 
 /** State, person, day: what changes most, in reach of a thumb. */
 export function FactsSheet({ hand }: { hand: CaseInHand }) {
   const { page, send, change } = hand;
   const c = page.case;
   const [closing, setClosing] = useState<CaseState | null>(null);
+  const [asked, setAsked] = useState(false);
   // what somebody else did is told on the page, which a dialog would cover; the note goes with the sending again
   if (hand.meanwhile && closing) setClosing(null);
   const facts = (some: {
@@ -26,8 +29,10 @@ export function FactsSheet({ hand }: { hand: CaseInHand }) {
   }) => change({ act: 'facts', version: c.version, ...some });
   const move = (to: CaseState) => {
     send.reset();
-    if (isClosed(to)) setClosing(to);
-    else change({ act: 'state', version: c.version, state: to, note: '' });
+    if (isClosed(to)) {
+      setClosing(to);
+      setAsked(true);
+    } else change({ act: 'state', version: c.version, state: to, note: '' });
   };
   return (
     <Sheet id="facts" title={factsSheet.whereItStands}>
@@ -84,19 +89,23 @@ export function FactsSheet({ hand }: { hand: CaseInHand }) {
           )}
         </p>
       </div>
-      <MoveDialog
-        move={closing && { number: c.number, to: closing }}
-        fault={send.error?.fault('note') ?? (hand.meanwhile ? null : (send.error?.message ?? null))}
-        busy={send.isPending}
-        onMove={(note) =>
-          closing &&
-          change({ act: 'state', version: c.version, state: closing, note }, () => setClosing(null))
-        }
-        onClose={() => {
-          setClosing(null);
-          hand.forget();
-        }}
-      />
+      {asked && (
+        <Suspense>
+          <MoveDialog
+            move={closing && { number: c.number, to: closing }}
+            fault={send.error?.fault('note') ?? (hand.meanwhile ? null : (send.error?.message ?? null))}
+            busy={send.isPending}
+            onMove={(note) =>
+              closing &&
+              change({ act: 'state', version: c.version, state: closing, note }, () => setClosing(null))
+            }
+            onClose={() => {
+              setClosing(null);
+              hand.forget();
+            }}
+          />
+        </Suspense>
+      )}
     </Sheet>
   );
 }

@@ -1,14 +1,16 @@
-import { useState } from 'react';
+import { Suspense, useState } from 'react';
 import { Button } from '../../components/ui/Button';
 import { Field } from '../../components/ui/Field';
 import { Sheet } from '../../components/ui/Sheet';
 import type { CasePage } from '../../schemas/api/cases';
 import { TITLE_MAX, WHAT_MAX } from '../../schemas/lists-and-limits';
+import { late } from '../../lib/late';
 import { paths } from '../../schemas/paths';
-import { PartsPicker } from './PartsPicker';
 import type { CaseInHand } from './query';
 import { TextArea } from './TextArea';
 import { whatSheet } from '../../words/cases';
+
+const PartsPicker = late(async () => (await import('./PartsPicker')).PartsPicker);
 
 /** What is wrong and which parts it is about. */
 export function WhatSheet({
@@ -98,13 +100,15 @@ function EditForm({ hand, onDone }: { hand: CaseInHand; onDone: () => void }) {
         error={send.error?.fault('what') ?? null}
         onChange={setWhat}
       />
-      <PartsPicker
-        strings={page.strings}
-        chosen={about.chosen}
-        parts={about.parts}
-        error={send.error?.fault('strings') ?? send.error?.fault('parts') ?? null}
-        onChange={setAbout}
-      />
+      <Suspense>
+        <PartsPicker
+          strings={page.strings}
+          chosen={about.chosen}
+          parts={about.parts}
+          error={send.error?.fault('strings') ?? send.error?.fault('parts') ?? null}
+          onChange={setAbout}
+        />
+      </Suspense>
       <div className="flex flex-wrap gap-2">
         <Button type="submit" weight="primary" disabled={send.isPending}>
           {whatSheet.save}

@@ -1,6 +1,6 @@
-import { useEffect, useMemo, useState } from 'react';
+import { Suspense, useMemo, useState } from 'react';
 import { useQuery } from '@tanstack/react-query';
-import { Steps } from '../../components/commissioning/Steps';
+import { StepsBeside } from '../../components/commissioning/StepsBeside';
 import { Button, ButtonLink } from '../../components/ui/Button';
 import { Caution } from '../../components/ui/Caution';
 import { Field } from '../../components/ui/Field';
@@ -10,13 +10,13 @@ import { Notice } from '../../components/ui/Notice';
 import { Segmented } from '../../components/ui/Segmented';
 import { Sheet } from '../../components/ui/Sheet';
 import { api } from '../../lib/api';
+import { late } from '../../lib/late';
 import { queryClient } from '../../lib/query-client';
 import { useViewInUrl } from '../../lib/view-in-url';
 import type { ChecksPage, ChecksView } from '../../schemas/api/checks-page';
 import { paths } from '../../schemas/paths';
 import { CHECKS_DEFAULTS, counted, listedRows, rowsOf } from './rows';
 import { Matrix } from './Matrix';
-import { StringChecks } from './StringChecks';
 import { useSigning } from './signing';
 import { CellMark } from './CellMark';
 import { MARK_WORDS, checksHeading, checksSentence } from './words';
@@ -28,6 +28,8 @@ interface Props {
   mayWrite: boolean;
   mayRecordEvidence: boolean;
 }
+
+const StringChecks = late(async () => (await import('./StringChecks')).StringChecks);
 
 const SHOWN: Record<ChecksView['show'], string> = {
   all: checksBoard.all,
@@ -65,12 +67,6 @@ export function ChecksBoard({ initial, view: first, mayWrite, mayRecordEvidence 
   const { sign, busy, faults } = useSigning(again);
   const sentence = checksSentence(rows);
 
-  useEffect(() => {
-    if (!view.string) return;
-    const target = document.getElementById(focus ? `check-${focus}` : 'string');
-    target?.scrollIntoView({ block: 'nearest' });
-  }, [view.string, focus]);
-
   return (
     <>
       <Heading
@@ -90,7 +86,7 @@ export function ChecksBoard({ initial, view: first, mayWrite, mayRecordEvidence 
       />
       <NotRead error={error} title={checksBoard.theChecksCouldNot} className="mb-4" />
       <div className="grid gap-5 xl:grid-cols-[200px_minmax(0,1fr)]">
-        <Steps site={site.id} steps={page.steps} here="install_checks" />
+        <StepsBeside site={site.id} steps={page.steps} here="install_checks" />
         <div className="grid min-w-0 content-start gap-5">
           <Sheet
             id="strings"
@@ -197,16 +193,19 @@ export function ChecksBoard({ initial, view: first, mayWrite, mayRecordEvidence 
             </ul>
           </Sheet>
           {open && (
-            <StringChecks
-              key={open.string.id}
-              page={page}
-              row={open}
-              mayWrite={mayWrite}
-              mayRecordEvidence={mayRecordEvidence}
-              signing={{ sign, busy }}
-              onChanged={again}
-              onClose={() => change({ string: '' })}
-            />
+            <Suspense>
+              <StringChecks
+                key={open.string.id}
+                page={page}
+                row={open}
+                focus={focus}
+                mayWrite={mayWrite}
+                mayRecordEvidence={mayRecordEvidence}
+                signing={{ sign, busy }}
+                onChanged={again}
+                onClose={() => change({ string: '' })}
+              />
+            </Suspense>
           )}
           <Caution strong={checksBoard.aSignatureSaysWhat}>{checksBoard.dcStringsStayDangerous}</Caution>
         </div>

@@ -1,4 +1,4 @@
-import { useRef, useState } from 'react';
+import { useEffect, useRef, useState } from 'react';
 import { KIND_WORDS, STAGE_WORDS } from '../../words/domain-reading-stages';
 import { READING_CAUTION } from '../../domain/readings/words';
 import { cautionParts } from '../../components/readings/words';
@@ -29,6 +29,9 @@ interface Props {
 /** One string at one stage: each reading with what it means, what else it could be, and what it rests on. */
 export function ReadingDetail({ page, row, mayWrite, onChanged, onClose }: Props) {
   const { site } = page.sheet;
+  useEffect(() => {
+    document.getElementById('reading')?.scrollIntoView({ block: 'nearest' });
+  }, []);
   const readings = [row.between, row.positive, row.negative].filter((r) => r !== null);
   const cautions = row.between?.finding?.cautions ?? [READING_CAUTION];
   return (

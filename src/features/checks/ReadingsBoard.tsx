@@ -1,7 +1,7 @@
-import { useEffect, useMemo } from 'react';
+import { Suspense, useMemo } from 'react';
 import { useQuery } from '@tanstack/react-query';
 import { STAGE_WORDS } from '../../words/domain-reading-stages';
-import { Steps } from '../../components/commissioning/Steps';
+import { StepsBeside } from '../../components/commissioning/StepsBeside';
 import { Button, ButtonLink } from '../../components/ui/Button';
 import { Field } from '../../components/ui/Field';
 import { Heading } from '../../components/ui/Heading';
@@ -14,12 +14,12 @@ import { Tag, type Tone } from '../../components/ui/Tag';
 import { SiteTime } from '../../components/ui/Time';
 import { volts } from '../../drawings/numbers';
 import { api } from '../../lib/api';
+import { late } from '../../lib/late';
 import { queryClient } from '../../lib/query-client';
 import { useViewInUrl } from '../../lib/view-in-url';
 import type { ChecksPage, ReadingsView } from '../../schemas/api/checks-page';
 import { paths } from '../../schemas/paths';
 import { ReadingBand } from './ReadingBand';
-import { ReadingDetail } from './ReadingDetail';
 import {
   READINGS_DEFAULTS,
   countOf,
@@ -31,6 +31,8 @@ import {
 } from './readings-rows';
 import { OUTCOME_WORDS, readingsHeading, readingsSentence } from './readings-words';
 import { readingsBoard } from '../../words/meter-readings';
+
+const ReadingDetail = late(async () => (await import('./ReadingDetail')).ReadingDetail);
 
 interface Props {
   initial: ChecksPage;
@@ -70,9 +72,6 @@ export function ReadingsBoard({ initial, view: first, mayWrite }: Props) {
   const here = rows.filter((r) => stage === 'all' || r.stage === stage);
   const open = rows.find((r) => `${r.string.name}.${r.stage}` === view.string);
   const sentence = readingsSentence(rows);
-  useEffect(() => {
-    if (view.string) document.getElementById('reading')?.scrollIntoView({ block: 'nearest' });
-  }, [view.string]);
   const toggle = (r: ReadingRow) => {
     const name = `${r.string.name}.${r.stage}`;
     change({ string: view.string === name ? '' : name });
@@ -160,7 +159,7 @@ export function ReadingsBoard({ initial, view: first, mayWrite }: Props) {
       />
       <NotRead error={error} title={readingsBoard.theReadingsCouldNot} className="mb-4" />
       <div className="grid gap-5 xl:grid-cols-[200px_minmax(0,1fr)]">
-        <Steps site={site.id} steps={page.steps} here="meter_readings" />
+        <StepsBeside site={site.id} steps={page.steps} here="meter_readings" />
         <div className="grid min-w-0 content-start gap-5">
           <Sheet
             id="strings"
@@ -230,14 +229,16 @@ export function ReadingsBoard({ initial, view: first, mayWrite }: Props) {
             <p className="mt-3 text-sm text-ink-2">{readingsBoard.theWashIsWhat}</p>
           </Sheet>
           {open && (
-            <ReadingDetail
-              key={open.key}
-              page={page}
-              row={open}
-              mayWrite={mayWrite}
-              onChanged={again}
-              onClose={() => change({ string: '' })}
-            />
+            <Suspense>
+              <ReadingDetail
+                key={open.key}
+                page={page}
+                row={open}
+                mayWrite={mayWrite}
+                onChanged={again}
+                onClose={() => change({ string: '' })}
+              />
+            </Suspense>
           )}
         </div>
       </div>

@@ -1,4 +1,4 @@
-import { useState } from 'react';
+import { useEffect, useState } from 'react';
 import { undocumentedPair } from '../../domain/commissioning/checks/connectors';
 import { Button, ButtonLink } from '../../components/ui/Button';
 import { Notice } from '../../components/ui/Notice';
@@ -18,6 +18,8 @@ import { stringChecks } from '../../words/checks';
 interface Props {
   page: ChecksPage;
   row: StringRow;
+  /** The check that was asked for, by its key. */
+  focus: string | null;
   mayWrite: boolean;
   mayRecordEvidence: boolean;
   signing: Signing;
@@ -27,11 +29,14 @@ interface Props {
 
 /** One string: what blocks its signature, then every check with its record, photos and figures. */
 export function StringChecks(props: Props) {
-  const { page, row, mayWrite, signing, onClose } = props;
+  const { page, row, focus, mayWrite, signing, onClose } = props;
   const { string, state, status } = row;
   const { timeZone } = page.sheet.site;
   const [keepPlace, setKeepPlace] = useState(false);
   const missing = state.blocks.filter((b) => b.kind === 'missing').length;
+  useEffect(() => {
+    document.getElementById(focus ? `check-${focus}` : 'string')?.scrollIntoView({ block: 'nearest' });
+  }, [focus]);
   return (
     <Sheet
       id="string"

@@ -1,7 +1,7 @@
 import { Suspense, useCallback, useMemo, useRef, useState } from 'react';
 import { useQuery } from '@tanstack/react-query';
 import type { SlotRef } from '../../components/placements/evidence';
-import { Steps } from '../../components/commissioning/Steps';
+import { StepsBeside } from '../../components/commissioning/StepsBeside';
 import { Caution } from '../../components/ui/Caution';
 import { Heading } from '../../components/ui/Heading';
 import { LiveMark } from '../../components/ui/Live';
@@ -9,6 +9,7 @@ import { NotRead } from '../../components/ui/NotRead';
 import { Notice } from '../../components/ui/Notice';
 import { useNow } from '../../components/ui/Time';
 import { late } from '../../lib/late';
+import { later } from '../../lib/later';
 import { api } from '../../lib/api';
 import { useLive } from '../../lib/live-hook';
 import { Meanwhile } from '../../lib/meanwhile';
@@ -30,6 +31,18 @@ import { liveSteps, tallyOf } from './tally';
 import { rollCallWords } from './words';
 import { commissioningRollCall } from '../../words/commissioning';
 
+const Strings = later(
+  async () => (await import('./StringsSheet')).StringsSheet,
+  import.meta.env.SSR ? StringsSheet : null,
+);
+const lists = () => import('./Lists');
+const Missing = later(async () => (await lists()).MissingSheet, import.meta.env.SSR ? MissingSheet : null);
+const Unknown = later(async () => (await lists()).UnknownSheet, import.meta.env.SSR ? UnknownSheet : null);
+const Gateways = later(async () => (await lists()).GatewaysSheet, import.meta.env.SSR ? GatewaysSheet : null);
+const Wired = later(
+  async () => (await import('./WiredSheet')).WiredSheet,
+  import.meta.env.SSR ? WiredSheet : null,
+);
 const SwapDialog = late(async () => (await import('../../components/placements/SwapDialog')).SwapDialog);
 const PlaceDialog = late(async () => (await import('../../components/placements/PlaceDialog')).PlaceDialog);
 
@@ -130,8 +143,9 @@ export function RollCall({ initial, mayRun, mayPlace, view, typed }: Props) {
         </div>
         <div className="grid min-w-0 content-start gap-5 lg:col-start-1 lg:row-span-2 lg:row-start-2 xl:col-start-2 xl:row-start-1">
           <CurveSheet page={page} tally={tally} now={now} outlook={outlook} />
-          <StringsSheet siteId={siteId} tally={tally} view={view} />
-          <MissingSheet
+          <Strings className="min-w-0 empty:hidden" siteId={siteId} tally={tally} view={view} />
+          <Missing
+            className="min-w-0 empty:hidden"
             tally={tally}
             started={page.run !== null}
             siteId={siteId}
@@ -147,22 +161,24 @@ export function RollCall({ initial, mayRun, mayPlace, view, typed }: Props) {
               </a>
             </Notice>
           )}
-          <UnknownSheet
+          <Unknown
+            className="min-w-0 empty:hidden"
             page={page}
             tally={tally}
             onPlace={mayPlace ? ({ answer }) => setDialog({ kind: 'place', stranger: answer }) : null}
           />
           {tally.heard > 0 && (
-            <WiredSheet
+            <Wired
+              className="min-w-0 empty:hidden"
               siteId={siteId}
               onReview={mayPlace ? (first, second) => setDialog({ kind: 'swap', first, second }) : null}
               onReplace={mayPlace ? () => setDialog({ kind: 'replace', slot: null }) : null}
             />
           )}
-          <GatewaysSheet page={page} tally={tally} />
+          <Gateways className="min-w-0 empty:hidden" page={page} tally={tally} />
         </div>
         <div className="lg:col-span-2 lg:row-start-1 xl:col-span-1 xl:col-start-1 xl:row-span-2">
-          <Steps site={siteId} steps={liveSteps(page.steps, tally)} here="roll_call" />
+          <StepsBeside site={siteId} steps={liveSteps(page.steps, tally)} here="roll_call" />
         </div>
       </div>
       {dialog?.kind === 'swap' && (

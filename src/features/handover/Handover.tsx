@@ -1,6 +1,7 @@
 import { useQuery } from '@tanstack/react-query';
 import { useState } from 'react';
-import { STEP_NAMES, Steps } from '../../components/commissioning/Steps';
+import { STEP_NAMES } from '../../components/commissioning/Steps';
+import { StepsBeside } from '../../components/commissioning/StepsBeside';
 import { Button, ButtonLink } from '../../components/ui/Button';
 import { Heading } from '../../components/ui/Heading';
 import { NotRead } from '../../components/ui/NotRead';
@@ -196,7 +197,7 @@ export function Handover({ initial, mayMake }: Props) {
       <NotRead error={error} title={handoverWords.theHandoverCouldNot} className="mb-4" />
       <div className="grid gap-5 lg:grid-cols-[minmax(0,1fr)_340px] xl:grid-cols-[200px_minmax(0,1fr)_340px]">
         <div className="lg:col-span-2 xl:col-span-1">
-          <Steps site={page.site.id} steps={page.site.steps} here="handover" />
+          <StepsBeside site={page.site.id} steps={page.site.steps} here="handover" />
         </div>
         <div className="grid min-w-0 content-start gap-5">
           {open.length > 0 && (

@@ -4,9 +4,11 @@ import { Choice } from '../../components/ui/Choice';
 import { Field } from '../../components/ui/Field';
 import { Fold } from '../../components/ui/Fold';
 import { Segmented } from '../../components/ui/Segmented';
-import { RANGES, chosen, type PanelProps } from '../../components/readings/form';
+import { RANGES, type PanelProps } from '../../components/readings/form';
+import { chosen } from '../../components/readings/form-choices';
 import { SHEETS, SHEET_KEYS } from '../../components/readings/sheets';
-import { KIND_LABELS, stringWords } from '../../components/readings/words';
+import { KIND_LABELS } from '../../components/readings/kind-labels';
+import { stringWords } from '../../components/readings/words';
 import { stringPanel } from '../../words/readings';
 
 const OWN_FIELDS = [

@@ -1,17 +1,25 @@
-import { useEffect, useMemo } from 'react';
+import { Suspense, useEffect, useMemo } from 'react';
 import { interpretReading } from '../../domain/readings/interpret';
 import { READING_CAUTION } from '../../domain/readings/words';
 import { Caution } from '../../components/ui/Caution';
+import { late } from '../../lib/late';
+import { later } from '../../lib/later';
 import { useViewInUrl } from '../../lib/view-in-url';
 import { AnswerSheet } from '../../components/readings/AnswerSheet';
 import { KnownMore } from './KnownMore';
 import { MeterPanel } from '../../components/readings/MeterPanel';
-import { ReadAloud } from '../../components/readings/ReadAloud';
 import { ReadingScale } from '../../components/readings/ReadingScale';
 import { StringPanel } from './StringPanel';
-import { DEFAULTS, PLACES, chosen, readForm, type ReadingForm } from '../../components/readings/form';
+import { readForm } from '../../components/readings/form';
+import { DEFAULTS, PLACES, chosen, type ReadingForm } from '../../components/readings/form-choices';
 import { HOW_TO_MEASURE, aloud, cautionParts, titleOf } from '../../components/readings/words';
 import { tryReading } from '../../words/readings';
+
+const Scale = later(
+  async () => (await import('../../components/readings/ReadingScale')).ReadingScale,
+  import.meta.env.SSR ? ReadingScale : null,
+);
+const ReadAloud = late(async () => (await import('../../components/readings/ReadAloud')).ReadAloud);
 
 /** A meter reading and what it means, worked out as it is typed; everything that was typed stands in the address. */
 export function TryReading({ initial }: { initial: ReadingForm }) {
@@ -42,7 +50,7 @@ export function TryReading({ initial }: { initial: ReadingForm }) {
         </div>
         <div className="min-w-0 space-y-4">
           <AnswerSheet answer={answer} question={question} waiting={waiting} faults={faults} />
-          {answer && question && <ReadingScale answer={answer} question={question} />}
+          {answer && question && <Scale answer={answer} question={question} />}
           {cautions.map((caution) => {
             const { strong, rest } = cautionParts(caution);
             return (
@@ -51,7 +59,11 @@ export function TryReading({ initial }: { initial: ReadingForm }) {
               </Caution>
             );
           })}
-          {answer && question && <ReadAloud text={aloud(answer, question)} />}
+          {answer && question && (
+            <Suspense>
+              <ReadAloud text={aloud(answer, question)} />
+            </Suspense>
+          )}
           <KnownMore form={form} faults={faults} typed={typed} choose={choose} />
         </div>
       </div>

@@ -1,4 +1,4 @@
-import { useState, type FormEvent } from 'react';
+import { Suspense, useState, type FormEvent } from 'react';
 import { useMutation } from '@tanstack/react-query';
 import { Button } from '../../components/ui/Button';
 import { Caution } from '../../components/ui/Caution';
@@ -8,17 +8,24 @@ import { Heading } from '../../components/ui/Heading';
 import { Notice } from '../../components/ui/Notice';
 import { nextRound, openRound, type TestRecord } from '../../domain/commissioning/shutdown-test-record';
 import { ApiError, api } from '../../lib/api';
+import { late, useSoon } from '../../lib/late';
 import { queryClient } from '../../lib/query-client';
 import { paths } from '../../schemas/paths';
 import type { ShutdownTestPage } from '../../schemas/api/shutdown-test';
-import { CautionStep } from './CautionStep';
-import { PlanStep } from './PlanStep';
-import { RoundStep } from './RoundStep';
-import { SignStep } from './SignStep';
 import { roundName } from './round';
 import { useTest, type TestInHand } from './use-test';
 import { stepWords } from './words';
 import { guidedTest } from '../../words/shutdown-test';
+
+const plan = async () => (await import('./PlanStep')).PlanStep;
+const caution = async () => (await import('./CautionStep')).CautionStep;
+const round = async () => (await import('./RoundStep')).RoundStep;
+const sign = async () => (await import('./SignStep')).SignStep;
+const PlanStep = late(plan);
+const CautionStep = late(caution);
+const RoundStep = late(round);
+const SignStep = late(sign);
+const STEPS = [plan, caution, round, sign];
 
 type Step = 'plan' | 'caution' | 'sign' | number;
 
@@ -38,6 +45,7 @@ interface Props {
 /** A shutdown test, step by step, on the phone and at the desk. */
 export function GuidedTest({ initial, person, mayRun }: Props) {
   const test = useTest(initial, person.id);
+  useSoon(STEPS);
   const { page, record } = test;
   const [chosen, setChosen] = useState<Step | null>(null);
   const due = dueStep(record);
@@ -99,72 +107,74 @@ export function GuidedTest({ initial, person, mayRun }: Props) {
           )}
         </nav>
         <div className="min-w-0">
-          {step === 'plan' &&
-            (mayWrite ? (
-              <PlanStep
-                key={record.planned?.at ?? 'new'}
-                page={page}
-                plan={record.plan}
+          <Suspense>
+            {step === 'plan' &&
+              (mayWrite ? (
+                <PlanStep
+                  key={record.planned?.at ?? 'new'}
+                  page={page}
+                  plan={record.plan}
+                  person={person.name}
+                  now={test.now}
+                  onPlanned={(plan) => {
+                    test.act({ kind: 'planned', plan });
+                    go(null);
+                  }}
+                />
+              ) : (
+                <Notice
+                  kind="empty"
+                  title={
+                    record.plan
+                      ? guidedTest.isOnSiteOperates(record.plan.onSite, record.plan.operator)
+                      : guidedTest.nothingIsPlannedYet
+                  }
+                />
+              ))}
+            {step === 'caution' &&
+              (mayWrite ? (
+                <CautionStep
+                  facts={page.facts}
+                  record={record}
+                  person={person.name}
+                  onAccepted={(name) => {
+                    test.act({ kind: 'caution_accepted', name });
+                    go(null);
+                  }}
+                />
+              ) : (
+                <Notice
+                  kind="empty"
+                  title={
+                    record.caution ? guidedTest.acceptedBy(record.caution.name) : guidedTest.notAcceptedYet
+                  }
+                />
+              ))}
+            {typeof step === 'number' && record.rounds[step] && (
+              <>
+                <div className="mb-5">
+                  <Caution strong={guidedTest.treatEveryConductorAs}>
+                    {guidedTest.shutdownIsNotIsolation}
+                  </Caution>
+                </div>
+                <RoundStep key={step} test={test} index={step} mayWrite={mayWrite} onEnded={() => go(step)} />
+                {record.rounds[step].ended && (
+                  <AfterRound test={test} index={step} mayWrite={mayWrite} go={go} />
+                )}
+              </>
+            )}
+            {step === 'sign' && (
+              <SignStep
+                test={test}
                 person={person.name}
-                now={test.now}
-                onPlanned={(plan) => {
-                  test.act({ kind: 'planned', plan });
-                  go(null);
+                mayWrite={mayWrite}
+                onAnotherRound={() => {
+                  test.act({ kind: 'round_added', transmitter: null });
+                  go(record.rounds.length);
                 }}
               />
-            ) : (
-              <Notice
-                kind="empty"
-                title={
-                  record.plan
-                    ? guidedTest.isOnSiteOperates(record.plan.onSite, record.plan.operator)
-                    : guidedTest.nothingIsPlannedYet
-                }
-              />
-            ))}
-          {step === 'caution' &&
-            (mayWrite ? (
-              <CautionStep
-                facts={page.facts}
-                record={record}
-                person={person.name}
-                onAccepted={(name) => {
-                  test.act({ kind: 'caution_accepted', name });
-                  go(null);
-                }}
-              />
-            ) : (
-              <Notice
-                kind="empty"
-                title={
-                  record.caution ? guidedTest.acceptedBy(record.caution.name) : guidedTest.notAcceptedYet
-                }
-              />
-            ))}
-          {typeof step === 'number' && record.rounds[step] && (
-            <>
-              <div className="mb-5">
-                <Caution strong={guidedTest.treatEveryConductorAs}>
-                  {guidedTest.shutdownIsNotIsolation}
-                </Caution>
-              </div>
-              <RoundStep key={step} test={test} index={step} mayWrite={mayWrite} onEnded={() => go(step)} />
-              {record.rounds[step].ended && (
-                <AfterRound test={test} index={step} mayWrite={mayWrite} go={go} />
-              )}
-            </>
-          )}
-          {step === 'sign' && (
-            <SignStep
-              test={test}
-              person={person.name}
-              mayWrite={mayWrite}
-              onAnotherRound={() => {
-                test.act({ kind: 'round_added', transmitter: null });
-                go(record.rounds.length);
-              }}
-            />
-          )}
+            )}
+          </Suspense>
           {mayWrite && (
             <div className="mt-4 lg:hidden">
               <EndTest test={test} />

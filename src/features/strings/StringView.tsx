@@ -11,6 +11,7 @@ import { localDay } from '../../drawings/times';
 import { Sheet } from '../../components/ui/Sheet';
 import { withQuery } from '../../lib/api';
 import { late } from '../../lib/late';
+import { later } from '../../lib/later';
 import { useLive } from '../../lib/live-hook';
 import { tells } from '../../lib/patch';
 import { queryClient } from '../../lib/query-client';
@@ -32,6 +33,14 @@ import { WhenNear } from './WhenNear';
 import { findingOf, type Sentence } from '../../words/strings-sentences';
 import { stringView } from '../../words/strings';
 
+const Events = later(
+  async () => (await import('./EventsSheet')).EventsSheet,
+  import.meta.env.SSR ? EventsSheet : null,
+);
+const Units = later(
+  async () => (await import('./UnitTable')).UnitTable,
+  import.meta.env.SSR ? UnitTable : null,
+);
 const UnitsSheet = lazy(() => import('./UnitsSheet'));
 const HeatSheet = lazy(() => import('./HeatSheet'));
 const LoopSheet = lazy(() => import('./LoopSheet'));
@@ -238,7 +247,7 @@ function Page({ page: initial, history, view: initialView }: Props) {
             </WhenNear>
           </div>
           <div className="order-8 min-w-0 lg:order-none">
-            <EventsSheet page={page} />
+            <Events page={page} />
           </div>
         </div>
         <div className="order-9 flex min-w-0 flex-col gap-5 lg:order-none lg:col-span-2">
@@ -265,7 +274,7 @@ function Page({ page: initial, history, view: initialView }: Props) {
           <WhenNear>
             <TraceSheet siteId={site.id} stringId={string.id} timeZone={site.timeZone} />
           </WhenNear>
-          <UnitTable page={page} />
+          <Units page={page} className="min-w-0" />
         </div>
       </div>
     </>
