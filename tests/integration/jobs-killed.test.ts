@@ -4,7 +4,7 @@ import { randomUUID } from 'node:crypto';
 import { simpleParser } from 'mailparser';
 import type pg from 'pg';
 import { SMTPServer } from 'smtp-server';
-import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import { afterAll, beforeAll, beforeEach, describe, expect, it } from 'vitest';
 import type { SeededSite } from '../../seeds/plant/seeded';
 import type { Actor } from '../../src/domain/access/permissions';
 import { asActor } from '../../src/server/db/transaction';
@@ -16,7 +16,7 @@ import { makeWebhook } from '../../src/server/services/webhooks';
 import { testDatabase, type TestDatabase } from '../support/database';
 import { testFleet } from '../support/fleet';
 import { Happenings } from '../support/happenings';
-import { KilledWorker } from '../support/killed-worker';
+import { KilledWorker, betweenMinutes } from '../support/killed-worker';
 import { noonEverywhere } from '../support/noon';
 import { ingestClient } from '../support/pipeline';
 import { stand } from '../support/standing';
@@ -89,6 +89,8 @@ afterAll(async () => {
   await ingest.end();
   await db.drop();
 });
+
+beforeEach(betweenMinutes);
 
 const count = (sql: string, values: unknown[] = []): Promise<number> => worker.count(sql, values);
 const stuckAtTwo = (): Promise<void> =>

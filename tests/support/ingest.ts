@@ -59,7 +59,7 @@ export class Inbox<M extends { type: string }> {
   next<T extends M['type']>(
     type: T,
     also: (m: Extract<M, { type: T }>) => boolean = () => true,
-    withinMs = 8000,
+    withinMs = 30_000,
   ): Promise<Extract<M, { type: T }>> {
     type Wanted = Extract<M, { type: T }>;
     const test = (m: M) => m.type === type && also(m as Wanted);
@@ -193,7 +193,7 @@ export function frameOf(
 export async function until<T>(
   look: () => Promise<T | undefined | false | null>,
   what: string,
-  withinMs = 8000,
+  withinMs = 30_000,
 ): Promise<T> {
   const end = Date.now() + withinMs;
   for (;;) {

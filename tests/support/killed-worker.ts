@@ -25,12 +25,12 @@ export interface JobToKill {
 const justBefore = (from: Date): Date => new Date(from.getTime() - 5000);
 
 /**
- * Waits for the middle of a minute. At its turn the clock asks for jobs: two of those that come to the locked tables
- * first would be all that the worker does at a time.
+ * Waits for a part of a minute in which the clock asks for no jobs: at its turn it would have them do what a test has
+ * just prepared, or two others would stand at the locked tables, which is all that a worker does at a time.
  */
-async function betweenMinutes(): Promise<void> {
+export async function betweenMinutes(): Promise<void> {
   const second = (Date.now() / 1000) % 60;
-  const wait = second < 5 ? 5 - second : second > 50 ? 65 - second : 0;
+  const wait = second < 5 ? 5 - second : second > 35 ? 65 - second : 0;
   await new Promise((resolve) => setTimeout(resolve, wait * 1000));
 }
 
@@ -105,7 +105,6 @@ export class KilledWorker {
     half: () => Promise<void>,
     scene: () => Promise<void> = () => Promise.resolve(),
   ): Promise<void> {
-    await betweenMinutes();
     const lock = new pg.Client(this.db.url);
     await lock.connect();
     try {
