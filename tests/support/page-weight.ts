@@ -107,7 +107,8 @@ function partsOf(file: string, seen = new Set<string>()): Set<string> {
         );
   for (const from of imported.values())
     if (from.endsWith('.astro')) for (const part of partsOf(from, seen)) parts.add(part);
-  for (const [, name = ''] of text.matchAll(/<(\w+)[^>]*?\sclient:\w+/g)) {
+  for (const [, name = '', when = ''] of text.matchAll(/<(\w+)[^>]*?\sclient:(\w+)/g)) {
+    if (when === 'visible') continue; // fetched when it is scrolled to
     const from = imported.get(name);
     if (!from) throw new Error(`${file}: the island ${name} is not imported by name.`);
     parts.add(from.replace(/\.tsx?$/, ''));
