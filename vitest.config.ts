@@ -2,6 +2,7 @@ import { defineConfig } from 'vitest/config';
 import Order from './tests/setup/order';
 
 const noise = 'tests/setup/console.ts';
+const properties = 'tests/setup/properties.ts';
 const alone = 'tests/setup/alone.ts';
 const database = 'tests/setup/database.ts';
 const build = 'tests/setup/build.ts';
@@ -27,7 +28,7 @@ export default defineConfig({
             'tests/bench/**/*.test.ts',
           ],
           isolate: false, // a process and its modules for many small files, not for each
-          setupFiles: [noise],
+          setupFiles: [noise, properties],
         },
       },
       {
@@ -46,7 +47,7 @@ export default defineConfig({
           include: ['tests/integration/**/*.test.ts'],
           isolate: false, // the product is read anew for each file, packages once
           sequence: { setupFiles: 'list' },
-          setupFiles: [alone, noise],
+          setupFiles: [alone, noise, properties],
           globalSetup: [database],
         },
       },
