@@ -13,7 +13,8 @@ import { ensureDays, writeFrames } from '../../src/server/queries/ingest-frames'
 import { openCase } from '../../src/server/services/open-case';
 import { chooseLetter } from '../../src/server/services/roof-letters';
 import { makeWebhook } from '../../src/server/services/webhooks';
-import { testDatabase, type TestDatabase } from '../support/database';
+import type { TestDatabase } from '../support/database';
+import { ownCluster } from '../support/own-cluster';
 import { testFleet } from '../support/fleet';
 import { Happenings } from '../support/happenings';
 import { KilledWorker, betweenMinutes } from '../support/killed-worker';
@@ -61,7 +62,7 @@ const target: Server = createServer((req, res) => {
 const port = (server: { address(): unknown }): number => (server.address() as AddressInfo).port;
 
 beforeAll(async () => {
-  db = await testDatabase();
+  db = await ownCluster(); // what is told waits for the oldest transaction of a cluster
   scene = new Happenings(db);
   const fleet = await testFleet(db, [SITE, OTHER]);
   site = fleet.site(SITE);

@@ -8,7 +8,8 @@ import { paths } from '../../src/schemas/paths';
 import { endSession, openSession } from '../../src/server/auth/sessions';
 import { startIngest, stopIngest } from '../../src/server/ingest/service';
 import { liveHub, startLive, stopLive } from '../../src/server/live/service';
-import { testDatabase, type TestDatabase } from '../support/database';
+import type { TestDatabase } from '../support/database';
+import { ownCluster } from '../support/own-cluster';
 import { SECRET, testFleet, type TestFleet } from '../support/fleet';
 import {
   closed,
@@ -31,7 +32,7 @@ let logger: TestLogger;
 const open: WebSocket[] = [];
 
 beforeAll(async () => {
-  db = await testDatabase();
+  db = await ownCluster(); // what is told waits for the oldest transaction of a cluster
   fleet = await testFleet(db, ['Old Tannery Market Hall', 'Weirside Clinic', 'Netloft Terrace']);
   await noonEverywhere(db.owner);
   site = fleet.site('Old Tannery Market Hall');
