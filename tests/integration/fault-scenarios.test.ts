@@ -16,7 +16,8 @@ import { setRollupWatermark } from '../../src/server/queries/rollup';
 import { checkClosedCases } from '../../src/server/services/check-closed-cases';
 import { siteFigures } from '../../src/server/services/figures';
 import { Draw, drawPlant } from '../bench/diagnosis/plants';
-import { testDatabase, type TestDatabase } from '../support/database';
+import type { TestDatabase } from '../support/database';
+import { ownCluster } from '../support/own-cluster';
 import { pdfPages } from '../support/pdf';
 import { tellAll } from '../support/happenings';
 import {
@@ -61,7 +62,7 @@ const closed = new Map<string, string>();
 const mended = new Map<string, string>();
 
 beforeAll(async () => {
-  db = await testDatabase();
+  db = await ownCluster(); // what is told waits for the oldest transaction of a cluster
   live = new LivePlant(db, drawn);
   await live.start();
   analyst = await analystOf(db);

@@ -2,7 +2,8 @@ import { afterAll, beforeAll, beforeEach, describe, expect, it } from 'vitest';
 import type { Actor } from '../../src/domain/access/permissions';
 import { tell } from '../../src/server/jobs/tell';
 import { tellRound } from '../../src/server/services/notices-tell';
-import { testDatabase, type TestDatabase } from '../support/database';
+import type { TestDatabase } from '../support/database';
+import { ownCluster } from '../support/own-cluster';
 import { testFleet } from '../support/fleet';
 import { after, AT, FOREIGN, Happenings, HERE, OTHER, tellAll } from '../support/happenings';
 
@@ -11,7 +12,7 @@ let scene: Happenings;
 let customer: Actor;
 
 beforeAll(async () => {
-  db = await testDatabase();
+  db = await ownCluster(); // what is told waits for the oldest transaction of a cluster
   scene = new Happenings(db);
   const fleet = await testFleet(db, [HERE, OTHER, FOREIGN]);
   customer = await fleet.actor('customer@lowfield.example');
