@@ -44,6 +44,10 @@ describe('the demo fleet', () => {
       const there = solarHour(since, laidOut.find((s) => s.name === spec.name)?.longitude ?? 0);
       expect([spec.name, Math.abs(there - wanted) < 2]).toEqual([spec.name, true]);
     }
+    const hall = laidOut.find((s) => s.stage === 'commissioning');
+    const atHall = solarHour(since, hall?.longitude ?? 0);
+    expect(atHall).toBeGreaterThan(8.5);
+    expect(atHall).toBeLessThan(11.8);
     expect(new Set(laidOut.map((s) => `${s.latitude} ${s.longitude}`)).size).toBe(laidOut.length);
   });
 

@@ -26,10 +26,6 @@ const Figures = later(
   async () => (await import('./FiguresSheet')).FiguresSheet,
   import.meta.env.SSR ? FiguresSheet : null,
 );
-const History = later(
-  async () => (await import('./HistorySheet')).HistorySheet,
-  import.meta.env.SSR ? HistorySheet : null,
-);
 const Photos = later(
   async () => (await import('./PhotosSheet')).PhotosSheet,
   import.meta.env.SSR ? PhotosSheet : null,
@@ -103,7 +99,9 @@ export function CaseFile({ initial }: { initial: CasePage }) {
             <ChecklistSheet hand={hand} />
           </div>
           <Figures page={page} className="order-5 min-w-0 empty:hidden" />
-          <History hand={hand} className="order-6 min-w-0" />
+          <div className="order-6 min-w-0">
+            <HistorySheet hand={hand} />
+          </div>
         </div>
         <div className="contents lg:grid lg:min-w-0 lg:gap-6">
           <div className="order-2 min-w-0">
