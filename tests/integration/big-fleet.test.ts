@@ -6,9 +6,10 @@ import { fleetLines } from '../../src/features/fleet/list';
 import { firstPage, LINES_AT_ONCE } from '../../src/features/fleet/first-page';
 import { FLEET_DEFAULTS } from '../../src/features/fleet/view';
 import { asActor, asIngest } from '../../src/server/db/transaction';
-import { FleetCauses } from '../../src/server/live/fleet-causes';
+import { sitesNow } from '../../src/server/queries/sites-now';
 import { causesNow } from '../../src/server/services/causes';
 import { readFleet, readShutdown } from '../../src/server/services/fleet';
+import { KeptSites, type SiteStanding } from '../../src/server/services/kept-sites';
 import { readLowOutput } from '../../src/server/services/low-output';
 import { testDatabase, type TestDatabase } from '../support/database';
 
@@ -70,23 +71,116 @@ describe('a seeded fleet', () => {
     expect(new Set(shutdown.sites.map((s) => s.id))).toEqual(new Set(fleet.causes.map((c) => c.siteId)));
   });
 
-  it('keeps causes for the rounds of /live, and searches anew where something changed', async () => {
-    const { rows } = await db.owner.query<{ id: number }>(
-      'select id from site where organisation_id = $1 order by id',
-      [actor.organisationId],
-    );
-    const ids = rows.map((r) => r.id);
-    const kept = new FleetCauses();
-    const read = (changed: readonly number[]) => asIngest((tx) => kept.read(tx, NOW, ids, new Set(changed)));
-    const sorted = (causes: readonly { key: string }[]) => causes.map((c) => c.key).sort();
-    expect(sorted(await read([]))).toEqual(sorted(await asIngest((tx) => causesNow(tx, NOW, ids))));
-    await db.owner.query('update string_judgement set stuck = 0, silent = 0, verdict = $1, state = $2', [
-      new Array<number>(20).fill(0),
-      new Array<number>(20).fill(1),
-    ]);
-    const before = await read([]);
-    expect(before.length).toBeGreaterThan(0);
-    expect(await read(ids)).toEqual([]);
+  describe('kept between looks', () => {
+    const standing = (kept: KeptSites, ids: readonly number[], at = NOW) =>
+      asIngest((tx) => kept.read(tx, at, ids));
+    const idsOf = async (): Promise<number[]> => {
+      const { rows } = await db.owner.query<{ id: number }>(
+        'select id from site where organisation_id = $1 order by name',
+        [actor.organisationId],
+      );
+      return rows.map((r) => r.id);
+    };
+    /** Another verdict at the first unit of a site. */
+    const stick = (siteId: number, stuck: boolean) =>
+      db.owner.query(
+        `update string_judgement set verdict[1] = $2, state[1] = $3, stuck = $2
+         where string_id = (select min(id) from string where site_id = $1)`,
+        [siteId, stuck ? 1 : 0, stuck ? 2 : 1],
+      );
+    const isStuck = (standings: readonly SiteStanding[], at: number) =>
+      standings[at]?.causes.some((c) => c.units.some((u) => u.position === 1 && c.verdict === 'stuck'));
+
+    it('is what a fresh reading says, in the order asked for, without sites that are gone', async () => {
+      const ids = await idsOf();
+      const fresh = {
+        sites: await asIngest((tx) => sitesNow(tx, NOW, ids)),
+        causes: await asIngest((tx) => causesNow(tx, NOW, ids)),
+      };
+      const kept = new KeptSites(() => true);
+      for (const _ of ['read', 'kept']) {
+        const standings = await standing(kept, ids);
+        expect(standings.map((s) => s.site)).toEqual(fresh.sites);
+        expect(standings.flatMap((s) => s.causes)).toEqual(fresh.causes);
+      }
+      const turned = await standing(kept, [ids[2] ?? 0, 999_999, ids[0] ?? 0]);
+      expect(turned.map((s) => s.site.id)).toEqual([fresh.sites[2]?.id, fresh.sites[0]?.id]);
+    });
+
+    it('holds until somebody tells of a change, or for a minute', async () => {
+      const ids = await idsOf();
+      const [first = 0, second = 0] = ids;
+      const kept = new KeptSites(() => true);
+      await standing(kept, ids);
+      await stick(first, true);
+      await stick(second, true);
+      expect(isStuck(await standing(kept, ids), 0)).toBe(false);
+      kept.changed([first]);
+      const told = await standing(kept, ids);
+      expect(isStuck(told, 0)).toBe(true);
+      expect(told[0]?.site).toEqual((await asIngest((tx) => sitesNow(tx, NOW, [first])))[0]);
+      expect(isStuck(told, 1)).toBe(false);
+      expect(isStuck(await standing(kept, ids, new Date(NOW.getTime() + 60_000)), 1)).toBe(true);
+      await stick(first, false);
+      await stick(second, false);
+      kept.missed();
+      const after = await standing(kept, ids);
+      expect([isStuck(after, 0), isStuck(after, 1)]).toEqual([false, false]);
+    });
+
+    it('holds nothing while nobody tells of changes', async () => {
+      const ids = await idsOf();
+      const [first = 0] = ids;
+      let hears = true;
+      const kept = new KeptSites(() => hears);
+      await standing(kept, ids);
+      hears = false;
+      await stick(first, true);
+      expect(isStuck(await standing(kept, ids), 0)).toBe(true);
+      await stick(first, false);
+      expect(isStuck(await standing(kept, ids), 0)).toBe(false);
+      kept.heardBy(() => true);
+      await standing(kept, ids);
+      await stick(first, true);
+      expect(isStuck(await standing(kept, ids), 0)).toBe(false);
+      await stick(first, false);
+    });
+
+    it('does not keep what changed while it was read', async () => {
+      const ids = await idsOf();
+      const [first = 0] = ids;
+      const kept = new KeptSites(() => true);
+      // read in a transaction that does not see the change any more
+      await asIngest(async (tx) => {
+        await tx.raw('set transaction isolation level repeatable read');
+        await tx.raw('select 1 from site');
+        await stick(first, true);
+        const reading = kept.read(tx, NOW, ids);
+        kept.changed([first]);
+        expect(isStuck(await reading, 0)).toBe(false);
+      });
+      expect(isStuck(await standing(kept, ids), 0)).toBe(true);
+      await stick(first, false);
+    });
+
+    it('is read ahead of the next look', async () => {
+      const ids = await idsOf();
+      const [first = 0] = ids;
+      const kept = new KeptSites(() => true);
+      await standing(kept, ids);
+      await stick(first, true);
+      kept.changed([first]);
+      await kept.readAhead(NOW);
+      await stick(first, false);
+      expect(isStuck(await standing(kept, ids), 0)).toBe(true);
+      // what nobody asks for any more is not read
+      kept.changed([first]);
+      const later = new Date(NOW.getTime() + 11 * 60_000);
+      await kept.readAhead(later);
+      await stick(first, true);
+      expect(isStuck(await standing(kept, ids, later), 0)).toBe(true);
+      await stick(first, false);
+    });
   });
 });
 

@@ -24,22 +24,18 @@ export const causesAtFirst = <C extends Parameters<typeof isHazard>[0]>(causes: 
  * What a page of a large fleet is sent with: the lines that it shows first, and what is told of the whole. A small fleet
  * goes as it is.
  */
-export function firstPage(fleet: FleetNow, view: FleetView): { fleet: FleetNow; whole: Whole | null } {
+export function firstPage<F extends Pick<FleetNow, 'sites' | 'causes'>>(
+  fleet: F,
+  view: FleetView,
+): { fleet: F; whole: Whole | null } {
   if (fleet.sites.length <= LINES_AT_ONCE) return { fleet, whole: null };
   const lines = fleetLines(fleet.sites, fleet.causes, view);
   const sites = lines.slice(0, LINES_AT_ONCE).map((l) => l.site);
   const shown = new Set(sites.map((s) => s.id));
   const first = new Set(causesAtFirst([...fleet.causes].sort(byGravity)));
   const causes = fleet.causes.filter((c) => shown.has(c.siteId) || first.has(c));
-  const concerned = new Set(causes.map((c) => c.siteId));
   return {
-    fleet: {
-      ...fleet,
-      sites,
-      causes,
-      contacts: fleet.contacts.filter((c) => concerned.has(c.siteId)),
-      acknowledgements: fleet.acknowledgements.filter((a) => concerned.has(a.siteId)),
-    },
+    fleet: { ...fleet, sites, causes },
     whole: {
       finding: fleetFinding(fleet.sites, fleet.causes),
       sites: fleet.sites.length,

@@ -20,10 +20,10 @@ export const countOf = ({ causes }: Pick<Group, 'causes'>): Count => ({
 });
 
 /** What the page of a large fleet is sent with: the causes that it draws at first, and what is told of the others. */
-export function firstPage(
-  now: ShutdownNow,
+export function firstPage<S extends Pick<ShutdownNow, 'sites' | 'causes'>>(
+  now: S,
   view: ShutdownView,
-): { shutdown: ShutdownNow; whole: Whole | null } {
+): { shutdown: S; whole: Whole | null } {
   const groups = shutdownGroups(now.causes, view);
   // a cause that the search cut is drawn with the units that match, and kept with all of them
   const drawn = new Set(groups.flatMap((g) => shownOf(g, new Set())).map((c) => c.key));
@@ -35,8 +35,6 @@ export function firstPage(
       ...now,
       causes,
       sites: now.sites.filter((s) => concerned.has(s.id) || s.commands.length > 0),
-      contacts: now.contacts.filter((c) => concerned.has(c.siteId)),
-      acknowledgements: now.acknowledgements.filter((a) => drawn.has(a.key)),
     },
     whole: {
       finding: shutdownFinding(now.sites, now.causes),

@@ -6,7 +6,7 @@ import { gatewaysNow, invertersNow, stringsNow } from '../queries/now';
 import { answersOf } from '../queries/roll-call';
 import { sitesNow } from '../queries/sites-now';
 import { causesNow } from '../services/causes';
-import { FleetCauses } from './fleet-causes';
+import { keptSites } from '../services/kept-sites';
 import { noticesNow } from '../queries/notices';
 import { eventItemsOf, isOfSite, serialsHeard, type Subject } from './topics';
 
@@ -147,7 +147,6 @@ type SiteParts = Pick<Change, 'site' | 'inverters' | 'gateways' | 'causes'>;
 export async function readOverviews<L extends Listening>(
   listening: readonly L[],
   sites: ReadonlySet<number>,
-  kept: FleetCauses,
 ): Promise<Delta<L>[]> {
   return asIngest(async (tx) => {
     const at = new Date();
@@ -156,7 +155,7 @@ export async function readOverviews<L extends Listening>(
       const here = listening.filter((l) => atSite(l) === siteId).map((l) => l.subject.kind);
       if (here.length > 0) parts.set(siteId, await readSite(tx, at, siteId, here));
     }
-    const fleet = await readFleet(tx, at, listening, sites, kept);
+    const fleet = await readFleet(tx, at, listening, sites);
     return listening.map((l) => ({ to: l, cursor: l.cursor, change: overviewFor(l, parts, fleet) }));
   });
 }
@@ -189,14 +188,17 @@ async function readFleet(
   at: Date,
   listening: readonly Listening[],
   changed: ReadonlySet<number>,
-  kept: FleetCauses,
 ): Promise<FleetParts | null> {
   const visible = new Set(
     listening.flatMap((l) => (l.subject.kind === 'fleet' ? [...l.subject.siteIds] : [])),
   );
   const wanted = [...changed].filter((id) => visible.has(id));
   if (wanted.length === 0) return null;
-  return { sites: await sitesNow(tx, at, wanted), causes: await kept.read(tx, at, [...visible], changed) };
+  const kept = keptSites();
+  return {
+    sites: (await kept.read(tx, at, wanted)).map((s) => s.site),
+    causes: (await kept.read(tx, at, [...visible])).flatMap((s) => s.causes),
+  };
 }
 
 function overviewFor(

@@ -7,10 +7,10 @@ import { asIngest } from '../db/transaction';
 import { log } from '../log';
 import { siteByString } from '../queries/live';
 import { CHANNELS, readChanged, readNoticed } from '../queries/live-notices';
+import { keptSites } from '../services/kept-sites';
 import { Connection, type Subscription } from './connection';
 import { Listener } from './listener';
 import { Repeated } from './repeated';
-import { FleetCauses } from './fleet-causes';
 import { readNews, readNotices, readOverviews, watchedStrings, type Delta } from './round';
 import { isOfSite } from './topics';
 
@@ -23,6 +23,8 @@ const HELD_AGAIN_MS = 250;
 /** Every listener hears something this often, if only that the connection stands; it also makes lost wake-ups good. */
 const HEARTBEAT_MS = 15_000;
 const SESSIONS_EVERY_MS = 60_000;
+/** What changed at sites that somebody looks at is read so often, before they look again. */
+const READ_AHEAD_EVERY_MS = 2000;
 
 /** The browsers of one process. Notices only wake it: what it sends it has read from the database. */
 export class LiveHub {
@@ -37,18 +39,20 @@ export class LiveHub {
   private persons = new Set<number>();
   private everybody = false;
   private readonly notices = new Repeated(GATHER_MS, GATHER_MS, () => this.sendNotices());
-  private readonly fleetCauses = new FleetCauses();
   private readonly siteByString = new Map<number, number>();
   private readonly news = new Repeated(GATHER_MS, GATHER_MS, () => this.sendNews());
   private readonly overviews = new Repeated(GATHER_MS, OVERVIEW_EVERY_MS, () => this.sendOverviews());
   private beat: NodeJS.Timeout | undefined;
   private sessionTimer: NodeJS.Timeout | undefined;
+  private aheadTimer: NodeJS.Timeout | undefined;
+  private readonly ahead = new Repeated(0, READ_AHEAD_EVERY_MS, () => keptSites().readAhead(new Date()));
   private everything = false;
   private stopping = false;
   private readonly listener = new Listener(
     [CHANNELS.changed, CHANNELS.rollCall, CHANNELS.asBuilt, CHANNELS.noticed, CHANNELS.access],
     (channel, payload) => this.notice(channel, payload),
     () => {
+      keptSites().missed();
       this.everything = true;
       this.everybody = true;
       this.notices.soon();
@@ -57,6 +61,7 @@ export class LiveHub {
   );
 
   async start(): Promise<void> {
+    keptSites().heardBy(() => this.hears);
     await this.listener.start();
     this.beat = setInterval(() => {
       this.ping();
@@ -66,16 +71,19 @@ export class LiveHub {
       this.wake();
     }, HEARTBEAT_MS);
     this.sessionTimer = setInterval(() => void this.checkSessions(), SESSIONS_EVERY_MS);
+    this.aheadTimer = setInterval(() => this.ahead.soon(), READ_AHEAD_EVERY_MS);
   }
 
   async stop(): Promise<void> {
     this.stopping = true;
     clearInterval(this.beat);
     clearInterval(this.sessionTimer);
+    clearInterval(this.aheadTimer);
     clearTimeout(this.heldTimer);
     for (const { ws } of this.connections) ws.close(1001, 'the server is going away');
     await this.listener.stop();
-    await Promise.all([this.news.stop(), this.overviews.stop(), this.notices.stop()]);
+    keptSites().heardBy(() => false);
+    await Promise.all([this.news.stop(), this.overviews.stop(), this.notices.stop(), this.ahead.stop()]);
     for (const { ws } of this.connections) ws.terminate();
   }
 
@@ -115,6 +123,13 @@ export class LiveHub {
   }
 
   private notice(channel: string, payload: string): void {
+    const changed =
+      channel === CHANNELS.changed
+        ? readChanged(payload)
+        : channel === CHANNELS.rollCall || channel === CHANNELS.asBuilt
+          ? { sites: [Number(payload)], strings: [] }
+          : undefined;
+    if (changed) keptSites().changed(changed.sites);
     if (this.connections.size === 0) return;
     if (channel === CHANNELS.access) {
       const person = Number(payload);
@@ -126,8 +141,6 @@ export class LiveHub {
       this.notices.soon();
       return;
     }
-    const changed =
-      channel === CHANNELS.changed ? readChanged(payload) : { sites: [Number(payload)], strings: [] };
     for (const id of changed?.sites ?? []) {
       this.sites.add(id);
       this.eventSites.add(id);
@@ -204,7 +217,7 @@ export class LiveHub {
     const listening = this.listening();
     if (listening.length === 0) return;
     try {
-      this.send(await readOverviews(listening, sites, this.fleetCauses), false);
+      this.send(await readOverviews(listening, sites), false);
     } catch (error) {
       for (const id of sites) this.sites.add(id);
       throw error;

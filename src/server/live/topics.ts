@@ -16,6 +16,7 @@ import { answersOf } from '../queries/roll-call';
 import { sitesNow } from '../queries/sites-now';
 import { visibleSite } from '../queries/visible-site';
 import { causesNow } from '../services/causes';
+import { keptSites } from '../services/kept-sites';
 import { topicRefusals } from '../../words/refusals';
 
 /** What a topic is about, in the database's numbers, once the actor was found to be allowed to hear it. */
@@ -87,8 +88,8 @@ export const serialsHeard = (events: readonly LiveEvent[]): string[] =>
 async function stateOf(tx: Tx, subject: Subject, at: Date): Promise<Change> {
   if (subject.kind === 'notices') return { notices: await noticesNow(tx, subject.personId) };
   if (subject.kind === 'fleet') {
-    const ids = [...subject.siteIds];
-    return { sites: await sitesNow(tx, at, ids), causes: await causesNow(tx, at, ids) };
+    const standings = await keptSites().read(tx, at, [...subject.siteIds]);
+    return { sites: standings.map((s) => s.site), causes: standings.flatMap((s) => s.causes) };
   }
   const { siteId } = subject;
   if (subject.kind === 'string')

@@ -120,24 +120,6 @@ async function partsOf(tx: Tx, siteIds: readonly number[]): Promise<Parts> {
   return parts;
 }
 
-/**
- * Numbers of the visible sites that shutdown is about: those with these public identifiers, and those where something
- * other than a release is in force.
- */
-export async function sitesForShutdown(tx: Tx, refs: readonly string[]): Promise<number[]> {
-  const { rows } = await tx.raw<{ rows: { id: number }[] }>(
-    `select site.id from site where ${SITE_VISIBLE} and site.ref = any (:refs::uuid[])
-     union
-     select w.site_id from zone w join site on site.id = w.site_id ${newestCommand('zone_id')}
-     where ${SITE_VISIBLE} and o.in_force <> 'released'
-     union
-     select w.site_id from transmitter w join site on site.id = w.site_id ${newestCommand('transmitter_id')}
-     where ${SITE_VISIBLE} and o.in_force <> 'released'`,
-    { refs: [...refs] },
-  );
-  return rows.map((r) => r.id);
-}
-
 function siteOf(place: Place, parts: Parts, at: Date, performanceRatio: number | null): SiteNow {
   const { id } = place;
   const commands = (parts.said[id] ?? []).map((s) => ({ ...s, since: new Date(s.since).toISOString() }));

@@ -2,41 +2,59 @@ import type { FleetNow, SinceLastLook } from '../../schemas/api/fleet';
 import type { ShutdownNow } from '../../schemas/api/shutdown';
 import type { Tx } from '../db/transaction';
 import { acknowledgementsOf, contactsOf, missedSince, noteLook } from '../queries/fleet';
-import { sitesForShutdown, sitesNow } from '../queries/sites-now';
-import { causesNow } from './causes';
+import { visibleSiteNumbers } from '../queries/visible-site';
+import { keptSites } from './kept-sites';
 
-const sitesOf = (causes: readonly { siteId: string }[]): string[] => [
-  ...new Set(causes.map((c) => c.siteId)),
-];
+/** The sites of a fleet, or of a page of it, with what explains what is amiss there. */
+export type Standing = Pick<FleetNow, 'at' | 'sites' | 'causes'>;
 
-/** Every site that the actor sees, as it stands, with what to act on. A fixed number of statements. */
-export async function readFleet(tx: Tx, at: Date): Promise<FleetNow> {
-  const sites = await sitesNow(tx, at);
-  const causes = await causesNow(tx, at);
+/** Every site that the actor sees, as it stands, with what to act on. */
+export async function readStanding(tx: Tx, at: Date): Promise<Standing> {
+  const standings = await keptSites().read(tx, at, await visibleSiteNumbers(tx));
   return {
     at: at.toISOString(),
-    sites,
-    causes,
-    contacts: await contactsOf(tx, sitesOf(causes)),
-    acknowledgements: await acknowledgementsOf(tx, causes),
+    sites: standings.map((s) => s.site),
+    causes: standings.flatMap((s) => s.causes),
   };
 }
 
-/** The part of the fleet that shutdown is about: sites with a cause, or with something other than a release in force. */
-export async function readShutdown(tx: Tx, at: Date): Promise<ShutdownNow> {
-  const causes = await causesNow(tx, at);
-  const concerned = sitesOf(causes);
-  const sites = await sitesNow(tx, at, await sitesForShutdown(tx, concerned));
+/** The sites that shutdown is about: those with a cause, or with something other than a release in force. */
+export function aboutShutdown(standing: Standing): Standing {
+  const concerned = new Set(standing.causes.map((c) => c.siteId));
+  return { ...standing, sites: standing.sites.filter((s) => concerned.has(s.id) || s.commands.length > 0) };
+}
+
+/** Adds whom to call at these sites, and who has taken these causes on. */
+export async function withPeople<S extends Pick<Standing, 'causes'>>(
+  tx: Tx,
+  standing: S,
+  siteRefs: Iterable<string>,
+): Promise<S & Pick<FleetNow, 'contacts' | 'acknowledgements'>> {
   return {
-    at: at.toISOString(),
-    sites,
-    causes,
-    contacts: await contactsOf(
-      tx,
-      sites.map((s) => s.id),
-    ),
-    acknowledgements: await acknowledgementsOf(tx, causes),
+    ...standing,
+    contacts: await contactsOf(tx, [...new Set(siteRefs)]),
+    acknowledgements: await acknowledgementsOf(tx, standing.causes),
   };
+}
+
+/** The whole fleet, as it stands. */
+export async function readFleet(tx: Tx, at: Date): Promise<FleetNow> {
+  const standing = await readStanding(tx, at);
+  return withPeople(
+    tx,
+    standing,
+    standing.causes.map((c) => c.siteId),
+  );
+}
+
+/** The part of the fleet that shutdown is about. */
+export async function readShutdown(tx: Tx, at: Date): Promise<ShutdownNow> {
+  const standing = aboutShutdown(await readStanding(tx, at));
+  return withPeople(
+    tx,
+    standing,
+    standing.sites.map((s) => s.id),
+  );
 }
 
 /** So many lines fit before the causes without pushing them off a laptop's screen. */
