@@ -2,7 +2,7 @@ import { judgeOutput } from '../../src/domain/output/low-output';
 import { planeReference } from '../../src/domain/output/plane-reference';
 import { generator, samplePlane } from '../../src/domain/output/sample-plane';
 import { asIngest } from '../../src/server/db/transaction';
-import { writeOutputDays } from '../../src/server/queries/output-days';
+import { markNight, writeOutputDays } from '../../src/server/queries/output-days';
 import type { TestDatabase } from './database';
 
 /** Ohm between the units of the string and its input. */
@@ -74,5 +74,16 @@ export async function judgeLow(siteId: number, stringIds: readonly number[], now
       },
     };
   });
-  await asIngest((tx) => writeOutputDays(tx, siteId, rows, now));
+  const of = (outcome: string): number => rows.filter((r) => r.outcome === outcome).length;
+  await asIngest(async (tx) => {
+    await markNight(tx, {
+      siteId,
+      day: days[4] ?? '',
+      at: now,
+      strings: rows.length,
+      cantTell: of('cant_tell'),
+      low: of('low'),
+    });
+    await writeOutputDays(tx, siteId, rows, now);
+  });
 }

@@ -29,10 +29,6 @@ export type OutputDayRow = OutputDay & { stringId: number };
 const DAY = `to_char(o.day, 'YYYY-MM-DD') as day, o.outcome, o.method, o.ratio, o.z, o.loss_wh as "lossWh",
   o.expected_wh as "expectedWh", o.signature, o.finding`;
 
-/** The newest judged day of each string `s`. */
-const NEWEST_DAY = `cross join lateral (
-  select * from output_day d where d.string_id = s.id and d.day >= :judgedSince order by d.day desc limit 1) o`;
-
 /** The judged days of one string, oldest first, both included. The caller has checked that it may be seen. */
 export async function outputDaysOf(
   tx: Tx,
@@ -65,52 +61,58 @@ export interface JudgedString extends OutputDay {
 
 /**
  * Strings that the actor sees (or of one site) that make less than they should, as their newest judged day since
- * `judgedSince` (yyyy-mm-dd) found them. That day is looked up string by string: findings of the others are not read.
+ * `judgedSince` (yyyy-mm-dd) found them. Only low days are gone through, by an index that has no others.
  */
 export async function lowOutputStrings(
   tx: Tx,
   which: { siteId?: number; judgedSince: string },
 ): Promise<JudgedString[]> {
   const { rows } = await tx.raw<{ rows: JudgedString[] }>(
-    `select ${DAY}, site.ref as "siteRef", site.name as "siteName", site.time_zone as "timeZone", s.ref as "stringRef",
+    `with low as materialized (
+       select o.string_id, max(o.day) as day
+       from site join output_day o on o.site_id = site.id
+       where ${SITE_VISIBLE} and o.outcome = 'low' and o.day >= :judgedSince
+         ${which.siteId === undefined ? '' : 'and site.id = :siteId'}
+       group by o.string_id)
+     select ${DAY}, site.ref as "siteRef", site.name as "siteName", site.time_zone as "timeZone", s.ref as "stringRef",
             s.name as "stringName", plane.name as plane,
             case when c.ref is not null then json_build_object('ref', c.ref, 'since', c.since, 'lossWh', c.loss_wh,
               'lossWhDay', c.loss_wh_day, 'openCase',
               (select f.ref from case_file f where f.cause_id = c.id and f.closed_at is null limit 1)) end as cause
-     from string s join site on site.id = s.site_id join plane on plane.id = s.plane_id
-     ${NEWEST_DAY}
+     from low
+     join output_day o on o.string_id = low.string_id and o.day = low.day
+     join string s on s.id = low.string_id join site on site.id = s.site_id join plane on plane.id = s.plane_id
      left join cause c on c.site_id = s.site_id and c.kind = 'low_output' and c.closed_at is null
        and c.string_ids @> array[s.id]
-     where ${SITE_VISIBLE} and o.outcome = 'low' ${which.siteId === undefined ? '' : 'and s.site_id = :siteId'}
+     where not exists (select from output_day later where later.string_id = low.string_id and later.day > low.day)
      order by site.name, s.id`,
     { judgedSince: which.judgedSince, siteId: which.siteId ?? 0 },
   );
   return rows;
 }
 
-/** How many strings were judged since that day (yyyy-mm-dd), and of how many nothing could be told. */
-export async function judgedCounts(
-  tx: Tx,
-  judgedSince: string,
-): Promise<{ judged: number; cantTell: number }> {
-  const { rows } = await tx.raw<{ rows: { judged: number; cantTell: number }[] }>(
-    `select count(*)::int as judged, (count(*) filter (where o.outcome = 'cant_tell'))::int as "cantTell"
-     from string s join site on site.id = s.site_id ${NEWEST_DAY} where ${SITE_VISIBLE}`,
-    { judgedSince },
-  );
-  return rows[0] ?? { judged: 0, cantTell: 0 };
+/** What the nights of the actor's sites came to: each site's newest since `judgedSince` (yyyy-mm-dd). */
+export interface NightCounts {
+  judged: number;
+  /** Of how many of them nothing could be told. */
+  cantTell: number;
+  /** Operating sites, by name, of which no night was judged. */
+  unjudgedSites: string[];
 }
-
-/** Operating sites, by name, none of whose strings was judged since that day (yyyy-mm-dd). */
-export async function unjudgedSites(tx: Tx, judgedSince: string): Promise<string[]> {
-  const { rows } = await tx.raw<{ rows: { name: string }[] }>(
-    `select site.name from site
-     where ${SITE_VISIBLE} and site.stage = 'operating'
-       and not exists (select from output_day o where o.site_id = site.id and o.day >= :judgedSince)
-     order by site.name`,
+export async function nightCounts(tx: Tx, judgedSince: string): Promise<NightCounts> {
+  const { rows } = await tx.raw<{ rows: NightCounts[] }>(
+    `select coalesce(sum(n.strings), 0)::int as judged, coalesce(sum(n.cant_tell), 0)::int as "cantTell",
+            coalesce(array_agg(site.name order by site.name) filter (where n.strings is null and site.stage = 'operating'), '{}')
+              as "unjudgedSites"
+     from site left join lateral (
+       select strings, cant_tell from output_night
+       where site_id = site.id and day >= :judgedSince order by day desc limit 1) n on true
+     where ${SITE_VISIBLE}`,
     { judgedSince },
   );
-  return rows.map((r) => r.name);
+  const [counts] = rows;
+  if (!counts) throw new Error('A sum without groups has one row.');
+  return counts;
 }
 
 /** Writes the night's judgement of a site's strings; a night judged again replaces what it said. */

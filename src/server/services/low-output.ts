@@ -5,7 +5,7 @@ import type { Tx } from '../db/transaction';
 import { currencyOf } from '../queries/causes-list';
 import { tariffsByRef } from '../queries/figures';
 import { openCasesByString } from '../queries/low-output';
-import { judgedCounts, lowOutputStrings, unjudgedSites, type JudgedString } from '../queries/output-days';
+import { lowOutputStrings, nightCounts, type JudgedString } from '../queries/output-days';
 
 /** A string whose newest judged day is older says nothing of now. */
 const JUDGED_WITHIN_MS = 14 * 86_400_000;
@@ -43,7 +43,6 @@ function rowOf(s: JudgedString, price: number | null, openCase: LowString['openC
 export async function readLowOutput(tx: Tx, at: Date): Promise<LowOutput> {
   const judgedSince = new Date(at.getTime() - JUDGED_WITHIN_MS).toISOString().slice(0, 10);
   const low = await lowOutputStrings(tx, { judgedSince });
-  const { judged, cantTell } = await judgedCounts(tx, judgedSince);
   const tariffs = await tariffsByRef(tx, [...new Set(low.map((s) => s.siteRef))]);
   const cases = await openCasesByString(
     tx,
@@ -55,8 +54,6 @@ export async function readLowOutput(tx: Tx, at: Date): Promise<LowOutput> {
     rows: low.map((s) =>
       rowOf(s, priceOn(s.day, tariffs.get(s.siteRef) ?? []), cases.get(s.stringRef) ?? null),
     ),
-    judged,
-    cantTell,
-    unjudgedSites: await unjudgedSites(tx, judgedSince),
+    ...(await nightCounts(tx, judgedSince)),
   };
 }
