@@ -1,6 +1,8 @@
 import { tmpdir } from 'node:os';
 import path from 'node:path';
+import { setTimeout as sleep } from 'node:timers/promises';
 import pg from 'pg';
+import type { LoadRun } from '../../simulator/load/run';
 import { historyQuery } from '../../src/schemas/api/string';
 import { paths } from '../../src/schemas/paths';
 import { closePools } from '../../src/server/db/pools';
@@ -15,7 +17,7 @@ import { readHistory } from '../../src/server/services/string-history';
 import { readString } from '../../src/server/services/string-page';
 import { percentile, usedBy } from './fleet/process';
 import { plansOf } from './fleet/plans';
-import { loadOn, lookerAt, printer, say, stageFleet, type Looker } from './fleet/stage';
+import { loadOn, lookerAt, printer, say, stageFleet, type Looker, type Staged } from './fleet/stage';
 import { serve } from './ingest/server';
 
 /**
@@ -30,6 +32,8 @@ const WARM_UP = 4;
 /** For what a reading costs: so many a second for so long. */
 const BURST_READINGS_A_S = 10_000;
 const BURST_S = 20;
+/** So long after the last logger came, what it had to say at first is done. */
+const SETTLED_AFTER_S = 5;
 const PLANS = process.env.BENCH_PLANS ?? path.join(tmpdir(), 'wakeline-plans');
 /** What is aimed at, ms at p95. */
 const AIMS = {
@@ -119,6 +123,36 @@ interface Cost {
   pages: Record<Page, number>;
 }
 
+/**
+ * CPU of the process for one reading, us: at each size the same readings a second, since what a process costs by itself
+ * falls on as many of them, and once all loggers are there, since coming in happens once.
+ */
+async function costOfReading(staged: Staged, pid: number, size: number): Promise<number> {
+  const burst = loadOn(staged, PORT, {
+    duration: 120,
+    ramp: BURST_S / 4,
+    speed: (60 * BURST_READINGS_A_S) / size,
+    shutdowns: 0,
+    stuck: 0,
+    drain: 20,
+  });
+  await allConnected(burst);
+  await sleep(SETTLED_AFTER_S * 1000);
+  const before = { cpuS: usedBy(pid).cpuS, readings: burst.figures.acknowledgedReadings };
+  await sleep(BURST_S * 1000);
+  const readings = burst.figures.acknowledgedReadings - before.readings;
+  const us = ((usedBy(pid).cpuS - before.cpuS) * 1e6) / Math.max(1, readings);
+  await burst.stop();
+  figure(`reading_${size}_cpu_us`, us, 'us', 3);
+  figure(`reading_${size}_a_second`, readings / BURST_S, '1/s', 0);
+  return us;
+}
+
+async function allConnected(load: LoadRun): Promise<void> {
+  const deadline = Date.now() + 60_000;
+  while (load.connected() < load.loggers.length && Date.now() < deadline) await sleep(200);
+}
+
 async function measure(db: pg.Client, size: number): Promise<Cost> {
   const staged = await stageFleet(size / 100);
   figure(`seed_${size}_s`, staged.seconds, 's');
@@ -127,9 +161,7 @@ async function measure(db: pg.Client, size: number): Promise<Cost> {
     const looker = await lookerAt(db, PORT);
     const places = await placesOf(db, looker.organisationId);
     const load = loadOn(staged, PORT, { duration: 600, ramp: Math.max(2, size / 10_000) });
-    const deadline = Date.now() + 60_000;
-    while (load.connected() < load.loggers.length && Date.now() < deadline)
-      await new Promise((resolve) => setTimeout(resolve, 200));
+    await allConnected(load);
     say(`${load.connected()} loggers report; reading pages`);
     // what a page costs grows with the fleet or it does not; a small one is read with as much load beside it
     const pages = {} as Record<Page, number>;
@@ -147,21 +179,7 @@ async function measure(db: pg.Client, size: number): Promise<Cost> {
       figure(`${page}_${size}_kb`, bytes / 1000, 'kB');
     }
     await load.stop();
-    const before = usedBy(server.pid);
-    // at each size the same readings a second: what the process costs by itself falls on as many of them
-    const burst = loadOn(staged, PORT, {
-      duration: BURST_S,
-      ramp: BURST_S / 4,
-      speed: (60 * BURST_READINGS_A_S) / size,
-      shutdowns: 0,
-      stuck: 0,
-      drain: 20,
-    });
-    const figures = await burst.done;
-    const readingUs =
-      ((usedBy(server.pid).cpuS - before.cpuS) * 1e6) / Math.max(1, figures.acknowledgedReadings);
-    figure(`reading_${size}_cpu_us`, readingUs, 'us', 3);
-    figure(`reading_${size}_acknowledged`, figures.acknowledgedReadings, 'readings', 0);
+    const readingUs = await costOfReading(staged, server.pid, size);
     const actor = { organisationId: looker.organisationId, sites: 'all' as const };
     const whole: string[] = [];
     for (const page of PAGES) {
@@ -187,12 +205,14 @@ await db.connect();
 try {
   const costs: { size: number; cost: Cost }[] = [];
   for (const size of SIZES) costs.push({ size, cost: await measure(db, size) });
-  const small = costs[0];
-  const big = costs.at(-1);
-  if (small && big && small !== big) {
-    figure('reading_growth', big.cost.readingUs / small.cost.readingUs, 'ratio', 2);
+  // from each size to the next: a small fleet's page has fewer lines than fit on it, a large one's never more
+  for (const [i, { size, cost }] of costs.entries()) {
+    const smaller = costs[i - 1];
+    if (!smaller) continue;
+    const to = `${smaller.size}_to_${size}`;
+    figure(`reading_growth_${to}`, cost.readingUs / smaller.cost.readingUs, 'ratio', 2);
     for (const page of PAGES)
-      figure(`${page}_growth`, big.cost.pages[page] / small.cost.pages[page], 'ratio', 2);
+      figure(`${page}_growth_${to}`, cost.pages[page] / smaller.cost.pages[page], 'ratio', 2);
   }
   say(`plans are in ${PLANS}`);
 } finally {
