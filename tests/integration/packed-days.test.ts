@@ -271,7 +271,11 @@ describe('a packed day', () => {
 
     // the same by the statement that single frames are merged with, in a database of single frames only
     const before = (await asIngest(everything)) as Record<string, unknown>[];
-    await client.query('create temp table shadow (like string_frame including all)');
+    await client.query('create temp table shadow (like string_frame including all) partition by range (at)');
+    await client.query(
+      `create temp table string_frame_${new Date(midnight).toISOString().slice(0, 10).replaceAll('-', '')}
+       partition of shadow default`,
+    );
     await client.query(
       `insert into shadow (at, mask, string_id, voltage_sum, power_sum, ${VALUE_COLUMNS.join(', ')})
        select at, mask, string_id, voltage_sum, power_sum, ${VALUE_COLUMNS.join(', ')} from ${framesOf({

@@ -21,7 +21,8 @@ const RETRY_MS = { first: 200, max: 3000 };
 const DAYS_FRESH_S = 60;
 /** A batch that is not committed by then means that the database is slow. */
 const SLOW_AFTER_MS = 5000;
-const NO_PARTITION = '23514';
+/** No partition takes the row; its partition is closed, or gone. */
+const NO_PARTITION = new Set(['23514', '42P01']);
 
 /** Data that the database will never take (classes 22 and 23); whatever else it says, later may be different. */
 const isItsFault = (error: unknown): boolean => /^2[23]/.test(codeOf(error));
@@ -109,7 +110,7 @@ export class Lane {
       try {
         return await this.write(batch);
       } catch (error) {
-        const partition = codeOf(error) === NO_PARTITION && tries++ < 2;
+        const partition = NO_PARTITION.has(codeOf(error)) && tries++ < 2;
         if (partition) {
           this.daysAtS = 0;
           continue;

@@ -106,7 +106,8 @@ function append(column: Column, values: readonly (number | null)[]): boolean {
   return gaps;
 }
 
-const columnsOf = (row: FrameRow): readonly Values[] => [
+/** A frame's values in the order of VALUE_COLUMNS. */
+export const columnsOf = (row: FrameRow): readonly Values[] => [
   row.voltage,
   row.voltageIn,
   row.current,
@@ -117,8 +118,8 @@ const columnsOf = (row: FrameRow): readonly Values[] => [
   row.state,
 ];
 
-/** Bit (position − 1) set: that unit reported. As text: 63 bits do not fit a double. */
-export function maskOf(state: readonly (number | null)[]): string {
+/** Bit (position − 1) set: that unit reported. Its upper and its lower 32 bits. */
+export function maskWords(state: readonly (number | null)[]): [high: number, low: number] {
   let low = 0;
   let high = 0;
   for (let i = 0; i < state.length; i++) {
@@ -126,6 +127,12 @@ export function maskOf(state: readonly (number | null)[]): string {
     if (i < 32) low += 2 ** i;
     else high += 2 ** (i - 32);
   }
+  return [high, low];
+}
+
+/** The same as text: 63 bits do not fit a double. */
+export function maskOf(state: readonly (number | null)[]): string {
+  const [high, low] = maskWords(state);
   return high < 2 ** 20 ? String(high * 2 ** 32 + low) : String(BigInt(high) * 4_294_967_296n + BigInt(low));
 }
 
@@ -150,9 +157,8 @@ export function sumsOf(row: Pick<FrameRow, 'voltage' | 'voltageIn' | 'current' |
   return { voltage, power: Math.round(scaled / 10_000) };
 }
 
-/** The parameters that FRAMES_AS_ROWS reads, in its order. At least one row; none twice. */
-export function frameParameters(given: readonly FrameRow[]): (string | Buffer)[] {
-  const rows = [...given].sort((a, b) => a.stringId - b.stringId || a.at - b.at);
+/** The parameters that FRAMES_AS_ROWS reads, in its order. At least one row, by string and time; none twice. */
+export function frameParameters(rows: readonly FrameRow[]): (string | Buffer)[] {
   const lengths = VALUE_COLUMNS.map(() => 0);
   for (const row of rows) columnsOf(row).forEach((values, k) => (lengths[k]! += values?.length ?? 0));
   const columns = lengths.map((length): Column => ({

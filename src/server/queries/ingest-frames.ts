@@ -1,13 +1,14 @@
 import type pg from 'pg';
 import { VALUE_COLUMNS as COLUMNS, type ValueColumn as Column } from './frames';
+import { copyFrames } from './copy-frames';
 import { FRAMES_AS_ROWS, NEXT_PARAMETER, frameParameters } from './frame-parameters';
 import type { FrameRow } from './ingest-rows';
 
 /**
- * The one statement that makes a batch of frames durable: frames, quarters to roll up again, and the newest frame of
- * each string. Autocommit; rows in string order, so that writers never deadlock. It comes in two forms. Nearly every
- * frame is new, and of a string that was heard before: inserts and updates without the bookkeeping of a conflict take
- * two thirds of the time. Where one is not, that form fails as a whole and the other merges.
+ * Makes a batch of frames durable: frames, quarters to roll up again, and the newest frame of each string, in one
+ * transaction. Rows in string order, so that writers never deadlock. It comes in two forms. Nearly every frame is new, and
+ * of a string that was heard before: those are copied, and the newest of each string updates its state. Where one is there
+ * already that form fails as a whole, and a statement that merges does it.
  *
  * A batch holds a (string, time) once, and an incomplete frame never beside another of its string: the newest frame
  * of a string is taken from the batch by its time alone. `server/ingest/batch.ts` sees to both.
@@ -31,9 +32,10 @@ const merged = (c: Column) => either(c, `f.${c}`, `excluded.${c}`, `merge_values
 const INSERT_FRAMES = `insert into string_frame as f (at, mask, string_id, voltage_sum, power_sum, ${LIST})
   select at, mask, string_id, voltage_sum, power_sum, ${LIST} from x`;
 
-const dirty = (from: string) => `dirty as (
-  insert into rollup_dirty (quarter, string_id)
-  select distinct ${QUARTER}, string_id from ${from}
+const MARK_DIRTY = `insert into rollup_dirty (quarter, string_id)`;
+const dirty = `dirty as (
+  ${MARK_DIRTY}
+  select distinct ${QUARTER}, string_id from written
   where at <= ${DIRTY_BEFORE} and ${QUARTER} + interval '15 min' <= ${DIRTY_BEFORE}
   order by 1, 2 on conflict do nothing)`;
 
@@ -62,13 +64,15 @@ const saysNews = (
 ) => `(${n}.at > l.at or (${n}.at = l.at and (${n}.mask & ~l.mask) <> 0)
   or (${n}.at < l.at and exists (select from unnest(l.seen, ${seen}) u(a, b) where b > a)))`;
 
-const WRITE_NEW = `
+/** Beside COPY: the newest frame of each string, one a string, and the quarters to roll up again. */
+const WRITE_NEWEST = `
 with ${FRAMES_AS_ROWS},
-written as (${INSERT_FRAMES}),
-${dirty('x')},
+dirty as (${MARK_DIRTY}
+  select to_timestamp(quarter), string_id from unnest($${NEXT_PARAMETER}::int4[], $${NEXT_PARAMETER + 1}::int4[]) d(quarter, string_id)
+  order by 1, 2 on conflict do nothing),
 known as (
   update string_state l set ${newestFrom('n', 'n.whole', 'n.seen')}
-  from (select *, ${SEEN} seen from x where newest offset 0) n
+  from (select *, ${SEEN} seen from x offset 0) n
   where l.string_id = n.string_id and ${saysNews('n', 'n.seen')})
 ${INSERT_NEWEST} and not exists (select from string_state s where s.string_id = x.string_id)`;
 
@@ -81,7 +85,7 @@ written as (
     ${COLUMNS.map((c) => `${c} = ${merged(c)}`).join(',\n    ')}
   where (excluded.mask & ~f.mask) <> 0
   returning f.string_id, f.at),
-${dirty('written')}
+${dirty}
 ${INSERT_NEWEST}
 on conflict (string_id) do update set ${newestFrom('excluded', 'excluded.mask = ~((-1)::int8 << cardinality(excluded.state))', 'excluded.seen')}
 where ${saysNews('excluded', 'excluded.seen')}`;
@@ -91,27 +95,77 @@ const ALREADY_THERE = '23505';
 const BATCHES_MERGED = 20;
 const merging = new WeakMap<pg.ClientBase, number>();
 
+const QUARTER_S = 900;
+const DAY_S = 86_400;
+const dayName = (epochS: number): string =>
+  new Date(epochS * 1000).toISOString().slice(0, 10).replaceAll('-', '');
+
 /**
- * Outside a transaction: the form for new frames may fail and be followed by the other.
+ * Makes a batch durable. Outside a transaction: the form for new frames may fail and be followed by the other.
  *
  * @param dirtyBefore quarters that end at or before this are rolled up already: they are made dirty
  */
 export async function writeFrames(
   client: pg.ClientBase,
-  rows: readonly FrameRow[],
+  given: readonly FrameRow[],
   dirtyBefore: Date,
 ): Promise<void> {
-  const values = [...frameParameters(rows), dirtyBefore];
+  const rows = [...given].sort((a, b) => a.stringId - b.stringId || a.at - b.at);
   const left = merging.get(client) ?? 0;
   if (left === 0)
     try {
-      await client.query({ name: 'write_frames', text: WRITE_NEW, values });
+      await writeNew(client, rows, dirtyBefore);
       return;
     } catch (error) {
       if (!(error instanceof Error && 'code' in error && error.code === ALREADY_THERE)) throw error;
     }
   merging.set(client, left === 0 ? BATCHES_MERGED : left - 1);
-  await client.query({ name: 'merge_frames', text: WRITE_MERGING, values });
+  await client.query({
+    name: 'merge_frames',
+    text: WRITE_MERGING,
+    values: [...frameParameters(rows), dirtyBefore],
+  });
+}
+
+/** Frames by string and time, none of them there yet. */
+async function writeNew(client: pg.ClientBase, rows: readonly FrameRow[], dirtyBefore: Date): Promise<void> {
+  const days = new Map<number, FrameRow[]>();
+  for (const row of rows) {
+    const day = Math.floor(row.at / DAY_S);
+    const list = days.get(day);
+    if (list) list.push(row);
+    else days.set(day, [row]);
+  }
+  const newest = rows.filter((row, i) => rows[i + 1]?.stringId !== row.stringId);
+  await client.query('begin');
+  try {
+    for (const [day, ofDay] of days) await copyFrames(client, dayName(day * DAY_S), ofDay);
+    await client.query({
+      name: 'write_newest',
+      text: WRITE_NEWEST,
+      values: [...frameParameters(newest), ...dirtyQuarters(rows, dirtyBefore)],
+    });
+    await client.query('commit');
+  } catch (error) {
+    // where the connection is gone the server rolls back by itself
+    await client.query('rollback').catch(() => undefined);
+    throw error;
+  }
+}
+
+/** The quarters (epoch s) and strings of frames that are rolled up already, by string and time. */
+function dirtyQuarters(rows: readonly FrameRow[], dirtyBefore: Date): [number[], number[]] {
+  const beforeS = dirtyBefore.getTime() / 1000;
+  const quarters: number[] = [];
+  const strings: number[] = [];
+  for (const { at, stringId } of rows) {
+    const quarter = Math.floor(at / QUARTER_S) * QUARTER_S;
+    if (quarter + QUARTER_S > beforeS) continue;
+    if (quarters.at(-1) === quarter && strings.at(-1) === stringId) continue;
+    quarters.push(quarter);
+    strings.push(stringId);
+  }
+  return [quarters, strings];
 }
 
 /** Frames of days that have no partition, kept until the merge job has made one. */
