@@ -53,6 +53,7 @@ export async function down(knex: Knex): Promise<void> {
       d := d0;
       while d <= d1 loop
         foreach t in array array['string_frame', 'input_frame', 'inverter_frame', 'weather_frame', 'string_quarter'] loop
+          -- a packed day has no place for single frames any more
           continue when t = 'string_frame' and to_regclass('packed_frame_' || to_char(d, 'YYYYMMDD')) is not null;
           if to_regclass(t || '_' || to_char(d, 'YYYYMMDD')) is null then
             execute format('create table %I partition of %I for values from (%L) to (%L)',

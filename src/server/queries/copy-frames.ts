@@ -21,7 +21,8 @@ const ROW_BYTES = 2 + (4 + 8) + (4 + 8) + 3 * (4 + 4);
 const ARRAY_BYTES = 4 + ARRAY_HEADER_BYTES;
 const VALUE_BYTES = 4 + 2;
 
-const bytesOf = (row: FrameRow): number =>
+/** As many bytes as a row takes at most. Exported for its test, as `writeRows` is. */
+export const bytesOf = (row: FrameRow): number =>
   ROW_BYTES + VALUE_COLUMNS.length * (ARRAY_BYTES + row.state.length * VALUE_BYTES);
 
 /** One buffer a connection: a fresh one for each batch would be new memory each time. */
@@ -63,7 +64,7 @@ function writeArray(into: Buffer, from: number, values: readonly (number | null)
   return offset;
 }
 
-/** Rows of `string_frame` as COPY takes them; returns how many bytes they are. Exported for its test. */
+/** Rows of `string_frame` as COPY takes them; returns how many bytes they are. */
 export function writeRows(into: Buffer, rows: readonly FrameRow[]): number {
   let offset = SIGNATURE.copy(into, 0);
   for (const row of rows) {
