@@ -223,7 +223,6 @@ describe('a list', () => {
     expect(page.data).toEqual([]);
     await late.query('commit');
     late.release();
-    // the oldest transaction of the whole cluster decides, and other tests have theirs
     const { next } = page;
     await expect
       .poll(async () => (page = await read<Events>(`/events?order=recorded&cursor=${next}`)).data.length, {

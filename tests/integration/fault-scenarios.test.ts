@@ -16,8 +16,7 @@ import { setRollupWatermark } from '../../src/server/queries/rollup';
 import { checkClosedCases } from '../../src/server/services/check-closed-cases';
 import { siteFigures } from '../../src/server/services/figures';
 import { Draw, drawPlant } from '../bench/diagnosis/plants';
-import type { TestDatabase } from '../support/database';
-import { ownCluster } from '../support/own-cluster';
+import { testDatabase, type TestDatabase } from '../support/database';
 import { pdfPages } from '../support/pdf';
 import { tellAll } from '../support/happenings';
 import {
@@ -62,7 +61,7 @@ const closed = new Map<string, string>();
 const mended = new Map<string, string>();
 
 beforeAll(async () => {
-  db = await ownCluster(); // what is told waits for the oldest transaction of a cluster
+  db = await testDatabase();
   live = new LivePlant(db, drawn);
   await live.start();
   analyst = await analystOf(db);

@@ -13,8 +13,7 @@ import { ensureDays, writeFrames } from '../../src/server/queries/ingest-frames'
 import { openCase } from '../../src/server/services/open-case';
 import { chooseLetter } from '../../src/server/services/roof-letters';
 import { makeWebhook } from '../../src/server/services/webhooks';
-import type { TestDatabase } from '../support/database';
-import { ownCluster } from '../support/own-cluster';
+import { testDatabase, type TestDatabase } from '../support/database';
 import { testFleet } from '../support/fleet';
 import { Happenings } from '../support/happenings';
 import { KilledWorker, betweenMinutes } from '../support/killed-worker';
@@ -62,7 +61,7 @@ const target: Server = createServer((req, res) => {
 const port = (server: { address(): unknown }): number => (server.address() as AddressInfo).port;
 
 beforeAll(async () => {
-  db = await ownCluster(); // what is told waits for the oldest transaction of a cluster
+  db = await testDatabase();
   scene = new Happenings(db);
   const fleet = await testFleet(db, [SITE, OTHER]);
   site = fleet.site(SITE);

@@ -11,8 +11,7 @@ import { mailTransport, sendDue } from '../../src/server/mail/send-outbox';
 import { markRead } from '../../src/server/queries/notices';
 import { choicesPage, noticesPage, saveChoices } from '../../src/server/services/notices';
 import { openWayOut, takeWayOut, undoWayOut } from '../../src/server/services/unsubscribe';
-import type { TestDatabase } from '../support/database';
-import { ownCluster } from '../support/own-cluster';
+import { testDatabase, type TestDatabase } from '../support/database';
 import { testFleet, type TestFleet } from '../support/fleet';
 import { after, AT, FOREIGN, Happenings, HERE, OTHER, tellAll } from '../support/happenings';
 import { failure } from '../support/refusal';
@@ -27,7 +26,7 @@ let technician: Actor;
 let manager: Actor;
 
 beforeAll(async () => {
-  db = await ownCluster(); // what is told waits for the oldest transaction of a cluster
+  db = await testDatabase();
   scene = new Happenings(db);
   fleet = await testFleet(db, [HERE, OTHER, FOREIGN]);
   folder = await mkdtemp(path.join(tmpdir(), 'wakeline-letters-'));

@@ -8,8 +8,8 @@ import { paths } from '../../src/schemas/paths';
 import { endSession, openSession } from '../../src/server/auth/sessions';
 import { startIngest, stopIngest } from '../../src/server/ingest/service';
 import { liveHub, startLive, stopLive } from '../../src/server/live/service';
-import type { TestDatabase } from '../support/database';
-import { ownCluster } from '../support/own-cluster';
+import { testDatabase, type TestDatabase } from '../support/database';
+import { transactionElsewhere } from '../support/elsewhere';
 import { SECRET, testFleet, type TestFleet } from '../support/fleet';
 import {
   closed,
@@ -32,7 +32,7 @@ let logger: TestLogger;
 const open: WebSocket[] = [];
 
 beforeAll(async () => {
-  db = await ownCluster(); // what is told waits for the oldest transaction of a cluster
+  db = await testDatabase();
   fleet = await testFleet(db, ['Old Tannery Market Hall', 'Weirside Clinic', 'Netloft Terrace']);
   await noonEverywhere(db.owner);
   site = fleet.site('Old Tannery Market Hall');
@@ -270,6 +270,20 @@ describe('the cursor', () => {
     await until(async () => notesIn(inbox).length >= 2, 'both are told');
     const notes = notesIn(inbox).filter((n) => String(n).startsWith('began'));
     expect(notes).toEqual(['began first, ended last', 'began last, ended first']);
+  });
+
+  it('goes on while a transaction of another database of the cluster runs', async () => {
+    const inbox = await browse(ANALYST);
+    subscribe(inbox, `site:${site.ref}`);
+    await inbox.next('snapshot');
+    const elsewhere = await transactionElsewhere(db);
+    try {
+      await addEvent(db.owner, site.id, 'nobody here is writing');
+      await wake();
+      await until(async () => notesIn(inbox).includes('nobody here is writing'), 'it is told');
+    } finally {
+      await elsewhere.end();
+    }
   });
 
   it('of an earlier connection brings what happened in between, once', async () => {

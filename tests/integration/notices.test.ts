@@ -2,8 +2,8 @@ import { afterAll, beforeAll, beforeEach, describe, expect, it } from 'vitest';
 import type { Actor } from '../../src/domain/access/permissions';
 import { tell } from '../../src/server/jobs/tell';
 import { tellRound } from '../../src/server/services/notices-tell';
-import type { TestDatabase } from '../support/database';
-import { ownCluster } from '../support/own-cluster';
+import { testDatabase, type TestDatabase } from '../support/database';
+import { transactionElsewhere } from '../support/elsewhere';
 import { testFleet } from '../support/fleet';
 import { after, AT, FOREIGN, Happenings, HERE, OTHER, tellAll } from '../support/happenings';
 
@@ -12,7 +12,7 @@ let scene: Happenings;
 let customer: Actor;
 
 beforeAll(async () => {
-  db = await ownCluster(); // what is told waits for the oldest transaction of a cluster
+  db = await testDatabase();
   scene = new Happenings(db);
   const fleet = await testFleet(db, [HERE, OTHER, FOREIGN]);
   customer = await fleet.actor('customer@lowfield.example');
@@ -114,6 +114,17 @@ describe('what happens', () => {
     const kinds = (await scene.notices()).map((n) => n.kind);
     expect([...new Set(kinds)].sort()).toEqual(['hazard', 'planned_work', 'roll_call']);
     expect(kinds.filter((k) => k === 'hazard')).toHaveLength(3);
+  });
+
+  it('is told while a transaction of another database of the cluster runs', async () => {
+    const elsewhere = await transactionElsewhere(db);
+    try {
+      await scene.happens({ kind: 'planned_work', detail: { reason: 'gutters' } });
+      await tellAll();
+      expect((await scene.notices()).map((n) => n.kind)).toContain('planned_work');
+    } finally {
+      await elsewhere.end();
+    }
   });
 
   it('whose teller is killed before its commit is told by the next, once', async () => {

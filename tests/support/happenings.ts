@@ -41,7 +41,7 @@ export interface WrittenLetter {
   text: string;
 }
 
-/** Tells everything that has happened. Transactions of other databases of the cluster hold it up for a moment. */
+/** Tells everything that has happened. Transactions that still run hold it up for a moment. */
 export async function tellAll(at = AT): Promise<void> {
   for (let tries = 0; tries < 1800; tries++) {
     if ((await tell(() => at)).held === 0) return;

@@ -15,9 +15,8 @@ export interface OwnCluster extends TestDatabase {
 }
 
 /**
- * A cluster of a test's own with a migrated database, where a superuser is needed (copies, standbys), which the one that
- * all tests share does not give, or where transactions of other tests' databases would hold back what is told. Set in
- * this process's environment; drop it in `afterAll`.
+ * A cluster of a test's own with a migrated database, where a superuser is needed (copies, standbys): the one that all
+ * tests share has none to give. Set in this process's environment; drop it in `afterAll`.
  */
 export async function ownCluster(): Promise<OwnCluster> {
   const folder = fs.mkdtempSync(path.join(os.tmpdir(), 'wakeline-second-'));

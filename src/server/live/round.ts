@@ -1,7 +1,8 @@
 import type { CauseNow, SiteNow } from '../../schemas/api/now';
 import type { Change } from '../../schemas/live';
 import { asIngest, type Tx } from '../db/transaction';
-import { eventsBetween, horizon, rollCallOpen, type Events, type LiveEvent } from '../queries/live';
+import { horizon } from '../queries/horizon';
+import { eventsBetween, rollCallOpen, type Events, type LiveEvent } from '../queries/live';
 import { gatewaysNow, invertersNow, stringsNow } from '../queries/now';
 import { answersOf } from '../queries/roll-call';
 import { sitesNow } from '../queries/sites-now';

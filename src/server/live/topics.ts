@@ -1,9 +1,9 @@
 import { mayUse, type Actor, type Permission } from '../../domain/access/permissions';
 import type { Change } from '../../schemas/live';
 import { asActor, asIngest, type Tx } from '../db/transaction';
+import { horizon } from '../queries/horizon';
 import {
   eventsBetween,
-  horizon,
   newestEvents,
   rollCallOpen,
   visibleSites,

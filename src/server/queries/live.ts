@@ -4,21 +4,8 @@ import { SITE_VISIBLE } from './visible-site';
 
 /**
  * What /live reads besides the present state. The cursor is a transaction number: every event of a transaction below
- * it was read. Only numbers below the oldest running transaction are given out, so that writers who commit out of
- * order lose nothing.
+ * it was read. How far it may go is told by horizon.ts.
  */
-
-/**
- * The number below which nothing can appear any more. `held`: transactions above it are still running, so what was
- * committed after them is not to be read yet.
- */
-export async function horizon(tx: Tx): Promise<{ below: string; held: boolean }> {
-  const { rows } = await tx.raw<{ rows: { below: string; held: boolean }[] }>(
-    `select pg_snapshot_xmin(s)::text as below, pg_snapshot_xmin(s) <> pg_snapshot_xmax(s) as held
-     from pg_current_snapshot() s`,
-  );
-  return rows[0]!;
-}
 
 export interface LiveEvent extends EventItem {
   xid: string;

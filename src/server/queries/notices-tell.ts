@@ -4,6 +4,7 @@ import type { How } from '../../domain/notices/kinds';
 import type { SubjectState } from '../../domain/notices/subject';
 import type { EventKind } from '../../domain/verdicts/codes';
 import type { Tx } from '../db/transaction';
+import { EVENT_HORIZON } from './horizon';
 
 /** What the teller reads and writes: events by its cursor, what is told of what lasts, notices. Runs as ingest. */
 
@@ -25,7 +26,7 @@ export async function somethingToTell(
   const { rows } = await tx.raw<{ rows: { told: boolean; lags: boolean }[] }>(
     `select exists (select from event e where (e.xid, e.id) > (r.xid, r.id) and e.kind = any (:kinds::text[]))
               or exists (select from notice_subject where due_at <= :now) as told,
-            (pg_snapshot_xmin(pg_current_snapshot())::text::numeric - r.xid::text::numeric) > :lag as lags
+            (${EVENT_HORIZON}::text::numeric - r.xid::text::numeric) > :lag as lags
      from event_reader r where r.reader = :reader`,
     { reader, kinds: [...kinds], now, lag: LAG_MAX },
   );

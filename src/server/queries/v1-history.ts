@@ -1,5 +1,6 @@
 import type { EventKind } from '../../domain/verdicts/codes';
 import type { Tx } from '../db/transaction';
+import { EVENT_HORIZON } from './horizon';
 import { SITE_VISIBLE } from './visible-site';
 
 /** What happened, as lists for other programs: from a key on, one row further than asked for. */
@@ -67,7 +68,7 @@ export async function eventsAsRecorded(
   rows: number,
 ): Promise<EventRow[]> {
   const found = await tx.raw<{ rows: EventRow[] }>(
-    `${EVENT} and e.xid < pg_snapshot_xmin(pg_current_snapshot())
+    `${EVENT} and e.xid < ${EVENT_HORIZON}
        and (:xid::text is null or (e.xid, e.id) > (:xid::text::xid8, :id::text::int8))
      order by e.xid, e.id limit :rows`,
     { ...bound(filter), xid: after?.[0] ?? null, id: after?.[1] ?? null, rows },

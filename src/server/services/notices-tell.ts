@@ -3,7 +3,7 @@ import { TOLD_EVENTS, toldOf, type Told } from '../../domain/notices/event';
 import { afterEvent, afterWait, type SubjectState, type SubjectStep } from '../../domain/notices/subject';
 import { noticeWords } from '../../domain/notices/words';
 import { asIngest, type Tx } from '../db/transaction';
-import { horizon } from '../queries/live';
+import { horizon } from '../queries/horizon';
 import {
   causesByRef,
   dueSubjects,
