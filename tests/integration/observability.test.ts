@@ -1,5 +1,7 @@
 import { createServer, type IncomingMessage, type Server } from 'node:http';
 import type { AddressInfo } from 'node:net';
+import knexFactory from 'knex';
+import pg from 'pg';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { loggerToken } from '../../simulator/scenarios/tokens';
 import type { SeededSite } from '../../seeds/plant/seeded';
@@ -8,8 +10,9 @@ import { startIngest, stopIngest } from '../../src/server/ingest/service';
 import { startLive, stopLive } from '../../src/server/live/service';
 import { startWorker, stopWorker } from '../../src/server/jobs/worker';
 import { countRequest, refusalClass } from '../../src/server/observe/meters';
-import { answerProbe, notReady, refusesMetrics } from '../../src/server/observe/probes';
+import { answerProbe, databaseReason, notReady, refusesMetrics } from '../../src/server/observe/probes';
 import { sampleNow, startSampler, stopSampler } from '../../src/server/observe/sampler';
+import { migrationsDone } from '../../src/server/queries/process-samples';
 import { readProcesses } from '../../src/server/services/status';
 import { testDatabase, type TestDatabase } from '../support/database';
 import { SECRET, testFleet, type TestFleet } from '../support/fleet';
@@ -81,14 +84,77 @@ describe('what a supervisor asks', () => {
       rows[0]?.name,
     ]);
     const lock = await db.owner.connect();
-    await lock.query('begin; lock table knex_migrations in access exclusive mode');
-    expect(await notReady()).toEqual(['database: no answer within 2 s']);
-    await lock.query('rollback');
-    lock.release();
+    try {
+      await lock.query('begin; lock table knex_migrations in access exclusive mode');
+      expect(await notReady()).toEqual(['database: no answer within 2 s']);
+    } finally {
+      await lock.query('rollback');
+      lock.release();
+    }
     await stopLive();
     expect(await notReady()).toEqual(['web: live updates do not run']);
     await startLive();
     await expect.poll(notReady).toEqual([]);
+  });
+});
+
+describe('an error of the database', () => {
+  const errorOf = (work: Promise<unknown>): Promise<unknown> =>
+    work.then(
+      () => expect.fail('there was none'),
+      (error: unknown) => error,
+    );
+  const elsewhere = (change: (address: URL) => void): Promise<unknown> => {
+    const address = new URL(db.ingestUrl);
+    change(address);
+    const client = new pg.Client(address.href);
+    client.on('error', () => undefined);
+    return client.connect().finally(() => client.end().catch(() => undefined));
+  };
+
+  it('that gave up waiting is no answer, whoever was told of it first', async () => {
+    const lock = await db.owner.connect();
+    const other = await db.owner.connect();
+    try {
+      await lock.query('begin; lock table knex_migrations in access exclusive mode');
+      for (const limit of ['lock_timeout', 'statement_timeout']) {
+        await other.query(`set ${limit} = '50ms'`);
+        const error = await errorOf(other.query('select name from knex_migrations'));
+        expect(databaseReason(error)).toBe('database: no answer within 2 s');
+        await other.query(`reset ${limit}`);
+      }
+    } finally {
+      await lock.query('rollback');
+      lock.release();
+      other.release();
+    }
+    const small = knexFactory({
+      client: 'pg',
+      connection: db.ingestUrl,
+      pool: { min: 0, max: 1 },
+      acquireConnectionTimeout: 50,
+      log: { warn: () => undefined }, // it would say so itself
+    });
+    try {
+      const error = await small.transaction(() => errorOf(migrationsDone(small)));
+      expect(databaseReason(error)).toBe('database: no answer within 2 s');
+    } finally {
+      await small.destroy();
+    }
+  });
+
+  it('tells one that is not there from one that refuses', async () => {
+    const gone = await errorOf(elsewhere((address) => (address.port = '1')));
+    expect(databaseReason(gone)).toBe('database: not reachable');
+    const missing = await errorOf(elsewhere((address) => (address.pathname = '/not_there')));
+    expect(databaseReason(missing)).toBe('database: answers with error 3D000');
+    const ended = await db.owner.connect();
+    try {
+      const error = await errorOf(ended.query('select pg_terminate_backend(pg_backend_pid())'));
+      expect(databaseReason(error)).toBe('database: not reachable');
+    } finally {
+      ended.release(true);
+    }
   });
 });
 

@@ -1,6 +1,8 @@
 import { timingSafeEqual } from 'node:crypto';
 import type { IncomingMessage, ServerResponse } from 'node:http';
 import { setTimeout as sleep } from 'node:timers/promises';
+import knexFactory from 'knex';
+import pg from 'pg';
 import { paths } from '../../schemas/paths';
 import { config, type Config } from '../config';
 import { database } from '../db/pools';
@@ -20,6 +22,11 @@ import { migrationsKnown } from './migrations-known';
  */
 
 const DATABASE_WITHIN_MS = 2000;
+const NO_ANSWER = `database: no answer within ${DATABASE_WITHIN_MS / 1000} s`;
+/** SQLSTATE: a lock's limit, a statement's. */
+const GAVE_UP: ReadonlySet<string> = new Set(['55P03', '57014']);
+/** SQLSTATE: connection lost; the server stops, starts, takes no connections. */
+const GOES_AWAY = /^(08|57P)/;
 /** Whoever asks more often gets the same answer: nobody can load the database by asking. */
 const READY_FRESH_MS = 1000;
 const PROXY_HEADERS = ['forwarded', 'x-forwarded-for', 'x-forwarded-host', 'x-real-ip', 'via'];
@@ -39,20 +46,31 @@ export async function notReady(): Promise<string[]> {
   return [...(await databaseReasons()), ...reasons];
 }
 
+/**
+ * What an error says of the database: one that gave up waiting (limits of ours that are longer than the probe's, told
+ * first where this process comes late to its clock) is there, as is one that answers with an error.
+ */
+export function databaseReason(error: unknown): string {
+  if (error instanceof knexFactory.KnexTimeoutError) return NO_ANSWER;
+  if (!(error instanceof pg.DatabaseError) || GOES_AWAY.test(error.code ?? ''))
+    return 'database: not reachable';
+  return GAVE_UP.has(error.code ?? '') ? NO_ANSWER : `database: answers with error ${error.code}`;
+}
+
 async function databaseReasons(): Promise<string[]> {
   const cut = new AbortController();
   try {
     const late = sleep(DATABASE_WITHIN_MS, null, { signal: cut.signal });
     late.catch(() => undefined); // cut short when the answer came in time
     const done = await Promise.race([migrationsDone(database('ingest')), late]);
-    if (done === null) return [`database: no answer within ${DATABASE_WITHIN_MS / 1000} s`];
+    if (done === null) return [NO_ANSWER];
     const has = new Set(done);
     const missing = migrationsKnown().filter((name) => !has.has(name));
     return missing.length === 0
       ? []
       : [`database: ${missing.length} migrations are missing, the first is ${missing[0]}`];
-  } catch {
-    return ['database: not reachable'];
+  } catch (error) {
+    return [databaseReason(error)];
   } finally {
     cut.abort();
   }
