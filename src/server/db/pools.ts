@@ -2,6 +2,7 @@ import knexFactory, { type Knex } from 'knex';
 import pg from 'pg';
 import { config } from '../config';
 import { log } from '../log';
+import { prepareRepeated, type Querying } from './prepared';
 
 // int8 fits a double in all that this product counts
 pg.types.setTypeParser(pg.types.builtins.INT8, Number);
@@ -75,7 +76,17 @@ export function database(purpose: Purpose): Knex {
     connection: (isPooled(purpose)
       ? pooledConnectionOf(purpose)
       : connectionOf(purpose)) as Knex.PgConnectionConfig,
-    pool: { min: 0, max: SIZES[purpose] },
+    pool: {
+      min: 0,
+      max: SIZES[purpose],
+      // a pooler gives each transaction another connection of the server
+      ...(!isPooled(purpose) && {
+        afterCreate: (connection: Querying, done: (error: Error | null, connection: Querying) => void) => {
+          prepareRepeated(connection);
+          done(null, connection);
+        },
+      }),
+    },
     acquireConnectionTimeout: 5000,
   }));
 }
