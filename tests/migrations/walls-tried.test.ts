@@ -192,6 +192,18 @@ describe('SQL of one’s own, in the web’s account', () => {
     expect(Number(number)).toBeLessThan(4_000_000);
   });
 
+  it('strings are found by their names within one’s own sites only', async () => {
+    const found = await own((query) => query(`select strings_named('', '\u{10ffff}', 100000) as id`));
+    const { rows } = await db.owner.query<{ id: number }>(
+      `select s.id from string s join site on site.id = s.site_id where site.organisation_id = $1 order by s.id`,
+      [here.organisation],
+    );
+    expect(rows.length).toBeGreaterThan(0);
+    expect(found.map((f) => Number(f.id)).sort((a, b) => a - b)).toEqual(rows.map((r) => r.id));
+    const { rows: all } = await db.owner.query<{ n: number }>('select count(*)::int as n from string');
+    expect(all[0]?.n).toBeGreaterThan(rows.length);
+  });
+
   it('a case of another organisation can’t be numbered, nor a test of another site superseded', async () => {
     await expect(own((query) => query('select next_case_number($1)', [there.organisation]))).rejects.toThrow(
       'numbered by their own organisation',

@@ -15,14 +15,16 @@ export interface SearchRow {
 /** A prefix for `like`, with what `like` would read as a pattern made plain. */
 export const likePrefix = (text: string): string => `${text.replace(/[\\%_]/g, '\\$&')}%`;
 
-/** Sorts after whatever a serial may go on with. */
+/** Sorts after whatever a serial or a name may go on with. */
 const LAST_CHARACTER = '\u{10ffff}';
+/** So many strings that begin so are looked at for the best ones: every site may have an A1. */
+const STRINGS_LOOKED_AT = 400;
 
 /**
  * Sites by the beginning of any word of their name or place, strings by the beginning of theirs ("B3", or
- * "Kestrel B3" within a site), units by the beginning of their serial. Serials go by index in their order, each looked up
- * until there are enough: written as bounds, since behind row-level security `like` may not choose rows (it is not
- * leakproof), and a short beginning would match every unit there is.
+ * "Kestrel B3" within a site), units by the beginning of their serial. Serials and names go by index in their order, looked
+ * up until there are enough: written as bounds, since behind row-level security `like` may not choose rows (it is not
+ * leakproof), and a short beginning would match every unit there is. Within a named site its strings are few.
  */
 export async function search(tx: Tx, text: string, limit: number): Promise<SearchRow[]> {
   const words = text.split(/\s+/).filter(Boolean);
@@ -38,9 +40,17 @@ export async function search(tx: Tx, text: string, limit: number): Promise<Searc
       order by lower(site.name) not like lower(:whole), site.name limit :limit)
      union all
      (select 'string', site.ref, site.name, site.place, s.ref, s.name, null, null
-      from string s join site on site.id = s.site_id
-      where ${SITE_VISIBLE} and upper(s.name) like upper(:last)
-        and (:withSite = '' or lower(site.name) like lower(:site) or lower(site.name) like '% ' || lower(:site))
+      from ${
+        withSite === ''
+          ? 'strings_named(:name, :nameEnd, :looked) found join string s on s.id = found'
+          : 'string s'
+      } join site on site.id = s.site_id
+      where ${SITE_VISIBLE} and ${
+        withSite === ''
+          ? 'true'
+          : `upper(s.name) like upper(:last)
+        and (lower(site.name) like lower(:site) or lower(site.name) like '% ' || lower(:site))`
+      }
       order by length(s.name), s.name, site.name limit :limit)
      union all
      (select 'unit', x.ref, x.site, x.place, x."stringRef", x.string, u.serial, x.position
@@ -56,7 +66,9 @@ export async function search(tx: Tx, text: string, limit: number): Promise<Searc
     {
       whole: likePrefix(words.join(' ')),
       last: likePrefix(last),
-      withSite,
+      name: last.toUpperCase(),
+      nameEnd: `${last.toUpperCase()}${LAST_CHARACTER}`,
+      looked: STRINGS_LOOKED_AT,
       site: likePrefix(withSite),
       serial: text.toUpperCase(),
       serialEnd: `${text.toUpperCase()}${LAST_CHARACTER}`,
