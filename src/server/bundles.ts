@@ -1,4 +1,5 @@
 import type { Plugin } from 'vite';
+import { NOT_CHARTED } from './chart-library';
 
 /** What most islands load, by the part of the path that tells: one file each packs tighter than forty small ones. */
 const TOGETHER: readonly (readonly [name: string, test: RegExp])[] = [
@@ -10,16 +11,26 @@ const TOGETHER: readonly (readonly [name: string, test: RegExp])[] = [
   ],
 ];
 
-/** Of the charts: colours and words that none of ours has. */
-const UNUSED = /node_modules\/echarts\/lib\/(theme\/dark|i18n\/langZH)\.js$/;
+const MODULE = /node_modules\/((?:echarts|zrender)\/lib\/[\w/]+\.js)$/;
 const OURS = /\/src\/(components|domain|drawings|features|lib|schemas|words)\//;
 
 /** How the browser's scripts are cut into files. The server's bundle is left as it comes. */
 export function bundles(): Plugin {
+  const left = new Set(Object.keys(NOT_CHARTED));
   return {
     name: 'wakeline:bundles',
     applyToEnvironment: (environment) => environment.name === 'client',
-    load: (id) => (UNUSED.test(id) ? 'export default {};' : null),
+    load(id) {
+      const module = MODULE.exec(id)?.[1] ?? '';
+      left.delete(module);
+      return NOT_CHARTED[module] ?? null;
+    },
+    buildEnd(error) {
+      if (!error && left.size > 0)
+        this.error(
+          `The chart library no longer imports ${[...left].join(', ')}: see server/chart-library.ts.`,
+        );
+    },
     // none of ours does anything by being imported: a list made at the top of a file goes where the file goes
     transform: (_, id) => (OURS.test(id) ? { moduleSideEffects: false } : null),
     outputOptions: (options) => ({
