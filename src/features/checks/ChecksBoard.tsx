@@ -161,6 +161,7 @@ export function ChecksBoard({ initial, view: first, mayWrite, mayRecordEvidence 
               />
             ) : (
               <Matrix
+                checks={page.checks}
                 rows={shown}
                 view={view}
                 open={view.string}
@@ -197,7 +198,7 @@ export function ChecksBoard({ initial, view: first, mayWrite, mayRecordEvidence 
               <StringChecks
                 key={open.string.id}
                 page={page}
-                row={open}
+                string={open.string}
                 focus={focus}
                 mayWrite={mayWrite}
                 mayRecordEvidence={mayRecordEvidence}

@@ -1,4 +1,4 @@
-import type { ChecksView } from '../../schemas/api/checks-page';
+import type { ChecksPage, ChecksView } from '../../schemas/api/checks-page';
 import { Tag, type Tone } from '../../components/ui/Tag';
 import { SiteTime } from '../../components/ui/Time';
 import { CellMark } from './CellMark';
@@ -7,6 +7,7 @@ import { MARK_WORDS, STATUS_WORDS } from './words';
 import { matrix } from '../../words/checks';
 
 interface Props {
+  checks: ChecksPage['checks'];
   rows: readonly StringRow[];
   view: ChecksView;
   open: string;
@@ -28,9 +29,7 @@ const TONES: Record<Status, Tone> = {
 };
 
 /** Strings down, checks across; on a narrow screen the checks of a string are a strip. */
-export function Matrix({ rows, view, open, now, timeZone, onOpen, onSort, chosen, onChoose }: Props) {
-  const first = rows[0];
-  if (!first) return null;
+export function Matrix({ checks, rows, view, open, now, timeZone, onOpen, onSort, chosen, onChoose }: Props) {
   const sortable = (key: ChecksView['sort'], label: string) => (
     <button
       type="button"
@@ -59,14 +58,14 @@ export function Matrix({ rows, view, open, now, timeZone, onOpen, onSort, chosen
             <th scope="col" aria-sort={sorted('name')} className="pb-1 pr-3 font-medium">
               {sortable('name', matrix.string)}
             </th>
-            {first.cells.map((cell) => (
+            {checks.map((check) => (
               <th
-                key={cell.check.key}
+                key={check.key}
                 scope="col"
                 className="hidden w-[30px] p-0 text-center align-bottom font-medium lg:table-cell"
               >
                 <span className="mx-auto mb-2 mt-4 inline-block rotate-180 whitespace-nowrap [writing-mode:vertical-rl]">
-                  {cell.check.name}
+                  {check.name}
                 </span>
               </th>
             ))}
@@ -87,7 +86,8 @@ export function Matrix({ rows, view, open, now, timeZone, onOpen, onSort, chosen
         </thead>
         <tbody>
           {rows.map((row) => {
-            const { string, cells, state, status } = row;
+            const { string, marks, recorded, asked, status } = row;
+            const cells = checks.map((check, i) => ({ check, mark: marks[i] ?? 'missing' }));
             const isOpen = string.name === open;
             return (
               <tr
@@ -136,7 +136,7 @@ export function Matrix({ rows, view, open, now, timeZone, onOpen, onSort, chosen
                   <button
                     type="button"
                     onClick={() => onOpen(string.name)}
-                    aria-label={matrix.ofChecksRecorded(string.name, state.recorded, state.asked)}
+                    aria-label={matrix.ofChecksRecorded(string.name, recorded, asked)}
                     className="flex min-h-[44px] flex-wrap items-center gap-[2px] py-1"
                   >
                     {cells.map((cell) => (
@@ -145,7 +145,7 @@ export function Matrix({ rows, view, open, now, timeZone, onOpen, onSort, chosen
                   </button>
                 </td>
                 <td className="hidden whitespace-nowrap pl-3 text-right sm:table-cell">
-                  {state.recorded} / {state.asked}
+                  {recorded} / {asked}
                 </td>
                 <td className="py-1 pl-4">
                   <div className="flex flex-wrap items-center gap-x-2">

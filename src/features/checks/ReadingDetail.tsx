@@ -10,7 +10,7 @@ import { SiteTime } from '../../components/ui/Time';
 import { percent, volts } from '../../drawings/numbers';
 import { ApiError, api } from '../../lib/api';
 import { newRef } from '../../lib/capture-records';
-import type { ChecksPage } from '../../schemas/api/checks-page';
+import type { DeskPage } from '../../schemas/api/checks-page';
 import type { ReadingInput, ReadingRecord } from '../../schemas/api/readings';
 import { paths } from '../../schemas/paths';
 import { AddPhotos, Photos } from './Photos';
@@ -19,7 +19,7 @@ import { OUTCOME_WORDS } from './readings-words';
 import { readingDetail } from '../../words/checks';
 
 interface Props {
-  page: ChecksPage;
+  page: DeskPage;
   row: ReadingRow;
   mayWrite: boolean;
   onChanged: () => Promise<unknown>;

@@ -17,7 +17,7 @@ import { api } from '../../lib/api';
 import { late } from '../../lib/late';
 import { queryClient } from '../../lib/query-client';
 import { useViewInUrl } from '../../lib/view-in-url';
-import type { ChecksPage, ReadingsView } from '../../schemas/api/checks-page';
+import type { ReadingsPage, ReadingsView } from '../../schemas/api/checks-page';
 import { paths } from '../../schemas/paths';
 import { ReadingBand } from './ReadingBand';
 import {
@@ -35,7 +35,7 @@ import { readingsBoard } from '../../words/meter-readings';
 const ReadingDetail = late(async () => (await import('./ReadingDetail')).ReadingDetail);
 
 interface Props {
-  initial: ChecksPage;
+  initial: ReadingsPage;
   view: ReadingsView;
   mayWrite: boolean;
 }
@@ -55,7 +55,7 @@ export function ReadingsBoard({ initial, view: first, mayWrite }: Props) {
   const { data: page, error } = useQuery(
     {
       queryKey: key,
-      queryFn: ({ signal }) => api<ChecksPage>(paths.api.readings(site.id), { signal }),
+      queryFn: ({ signal }) => api<ReadingsPage>(paths.api.readings(site.id), { signal }),
       initialData: initial,
       // others measure on the roof meanwhile
       refetchInterval: 20_000,
@@ -65,7 +65,7 @@ export function ReadingsBoard({ initial, view: first, mayWrite }: Props) {
   );
   const again = () => client.invalidateQueries({ queryKey: key });
   const [view, change] = useViewInUrl<ReadingsView>(first, READINGS_DEFAULTS);
-  const rows = useMemo(() => readingRows(page.sheet), [page.sheet]);
+  const rows = useMemo(() => readingRows(page), [page]);
   const shown = listedReadings(rows, view);
   const stages = [...new Set(rows.map((r) => r.stage))];
   const stage = stageShown(rows, view);

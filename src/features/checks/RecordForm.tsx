@@ -11,12 +11,12 @@ import type { CaptureSnapshot } from '../../schemas/api/capture';
 import { paths } from '../../schemas/paths';
 import { FigureFields, type Typed } from './FigureFields';
 import { begun, filled } from './typed';
-import { figureText, type Cell, type StringRow } from './rows';
+import { figureText, type Cell, type OpenString } from './open-string';
 import { recordForm } from '../../words/checks';
 
 interface Props {
   sheet: CaptureSnapshot;
-  row: StringRow;
+  row: OpenString;
   cell: Cell;
   onSaved: (record: CheckRecord) => Promise<unknown>;
   onCancel: () => void;

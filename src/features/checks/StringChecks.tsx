@@ -1,23 +1,24 @@
-import { useEffect, useState } from 'react';
+import { useEffect, useMemo, useState } from 'react';
 import { undocumentedPair } from '../../domain/commissioning/checks/connectors';
 import { Button, ButtonLink } from '../../components/ui/Button';
 import { Notice } from '../../components/ui/Notice';
 import { Sheet } from '../../components/ui/Sheet';
 import { SiteTime } from '../../components/ui/Time';
-import type { ChecksPage } from '../../schemas/api/checks-page';
+import type { CaptureString } from '../../schemas/api/capture';
+import type { DeskPage } from '../../schemas/api/checks-page';
 import { paths } from '../../schemas/paths';
 import { CellMark } from './CellMark';
 import { Evidence } from './Evidence';
 import { AddPhotos, Photos } from './Photos';
 import { RecordForm } from './RecordForm';
-import { figureText, type Cell, type StringRow } from './rows';
+import { figureText, openString, type Cell, type OpenString } from './open-string';
 import type { Signing } from './signing';
 import { MARK_WORDS } from './words';
 import { stringChecks } from '../../words/checks';
 
 interface Props {
-  page: ChecksPage;
-  row: StringRow;
+  page: DeskPage;
+  string: CaptureString;
   /** The check that was asked for, by its key. */
   focus: string | null;
   mayWrite: boolean;
@@ -29,8 +30,9 @@ interface Props {
 
 /** One string: what blocks its signature, then every check with its record, photos and figures. */
 export function StringChecks(props: Props) {
-  const { page, row, focus, mayWrite, signing, onClose } = props;
-  const { string, state, status } = row;
+  const { page, string, focus, mayWrite, signing, onClose } = props;
+  const row = useMemo(() => openString(page, string), [page, string]);
+  const { state, status } = row;
   const { timeZone } = page.sheet.site;
   const [keepPlace, setKeepPlace] = useState(false);
   const missing = state.blocks.filter((b) => b.kind === 'missing').length;
@@ -103,7 +105,7 @@ export function StringChecks(props: Props) {
       )}
       <ol className="divide-y divide-rule-faint border-t border-rule-faint">
         {row.cells.map((cell) => (
-          <CheckItem key={cell.check.key} cell={cell} keepPlace={keepPlace} {...props} />
+          <CheckItem key={cell.check.key} row={row} cell={cell} keepPlace={keepPlace} {...props} />
         ))}
       </ol>
     </Sheet>
@@ -118,7 +120,7 @@ function CheckItem({
   mayWrite,
   mayRecordEvidence,
   onChanged,
-}: Props & { cell: Cell; keepPlace: boolean }) {
+}: Props & { row: OpenString; cell: Cell; keepPlace: boolean }) {
   const [editing, setEditing] = useState(false);
   const { check, record, judged, mark, photos } = cell;
   const { site } = page.sheet;

@@ -1,14 +1,17 @@
 import { describe, expect, it } from 'vitest';
 import { UNIT_PRESETS } from '../../domain/equipment/unit-type';
 import { allPassed, context, H4, K6 } from '../../domain/commissioning/checks/sample-checks';
+import { checkMatrix } from '../../domain/commissioning/checks/string-standing';
 import { judgedNow } from '../../domain/commissioning/readings/judged-now';
+import { stagesRead } from '../../domain/commissioning/readings/stages-read';
 import { checksFor } from '../../domain/commissioning/checks/list';
 import type { CaptureString } from '../../schemas/api/capture';
-import type { ChecksPage } from '../../schemas/api/checks-page';
+import type { DeskPage } from '../../schemas/api/checks-page';
 import { readingFinding } from '../../schemas/api/readings';
 import { listedReadings, readingRows, READINGS_DEFAULTS, stageShown } from './readings-rows';
 import { readingsHeading, readingsSentence } from './readings-words';
-import { CHECKS_DEFAULTS, counted, figureText, listedRows, rowsOf } from './rows';
+import { figureText, openString } from './open-string';
+import { CHECKS_DEFAULTS, counted, listedRows, rowsOf as listed } from './rows';
 import { begun, filled } from './typed';
 import { checksHeading, checksSentence } from './words';
 
@@ -63,7 +66,7 @@ const string = (name: string, more: Partial<CaptureString> = {}): CaptureString 
   ...more,
 });
 const signed = (stale: boolean) => ({ ref: 's', person: 'Bram Ottersley', at: AT, fingerprint: 'f', stale });
-const page = (strings: CaptureString[], files: ChecksPage['files'] = []): ChecksPage => ({
+const page = (strings: CaptureString[], files: DeskPage['files'] = []): DeskPage => ({
   sheet: {
     at: AT,
     person: { id: 'p', name: 'x', role: 'technician' },
@@ -89,6 +92,8 @@ const page = (strings: CaptureString[], files: ChecksPage['files'] = []): Checks
   steps: [],
 });
 
+const rowsOf = (of: DeskPage) => listed({ ...of, ...checkMatrix(of.sheet) });
+
 const MIXED = page([
   string('A10', { checks: passed(), signOff: signed(false) }),
   string('A2', { checks: passed(), signOff: signed(true) }),
@@ -113,8 +118,9 @@ describe('the matrix of checks', () => {
       ['C1', 'blocked'],
       ['D1', 'none'],
     ]);
+    const { checks } = checkMatrix(MIXED.sheet);
     const mark = (name: string, key: string) =>
-      rows.find((r) => r.string.name === name)?.cells.find((c) => c.check.key === key)?.mark;
+      rows.find((r) => r.string.name === name)?.marks[checks.findIndex((c) => c.key === key)];
     expect(mark('B1', 'connectors')).toBe('contradicted');
     expect(mark('C1', 'strain_relief')).toBe('fail');
     expect(mark('A2', 'insulation')).toBe('not_applicable');
@@ -148,15 +154,15 @@ describe('the matrix of checks', () => {
 
   it('keeps a photo with its check when a newer record has taken the place of its own', () => {
     const photo = { stringId: 'A10', check: 'labels', subjectRef: 'an older record' };
-    const [first] = rowsOf(
-      page([string('A10', { checks: passed() })], [photo as ChecksPage['files'][number]]),
-    );
-    expect(first?.cells.find((c) => c.check.key === 'labels')?.photos).toEqual([photo]);
-    expect(first?.cells.find((c) => c.check.key === 'face')?.photos).toEqual([]);
+    const a10 = string('A10', { checks: passed() });
+    const open = openString(page([a10], [photo as DeskPage['files'][number]]), a10);
+    expect(open.cells.find((c) => c.check.key === 'labels')?.photos).toEqual([photo]);
+    expect(open.cells.find((c) => c.check.key === 'face')?.photos).toEqual([]);
   });
 
   it('writes figures with names and units', () => {
-    const cell = (key: string) => rows[2]!.cells.find((c) => c.check.key === key)!;
+    const { cells } = openString(MIXED, MIXED.sheet.strings[2]!);
+    const cell = (key: string) => cells.find((c) => c.check.key === key)!;
     expect(figureText(cell('connectors'), context().connectors)).toBe(
       'Module lead: H4 set, Unit lead towards the module: K6 set',
     );
@@ -219,7 +225,11 @@ describe('the list of readings', () => {
     string('A2', { readings: [reading(-552)] }),
     string('A3'),
   ]);
-  const rows = readingRows(page(strings).sheet);
+  const read = (of: CaptureString[]) => {
+    const { sheet } = page(of);
+    return readingRows({ sheet, stages: stagesRead(sheet) });
+  };
+  const rows = read(strings);
 
   it('has a line for every stage that the type asks for, and a finding for what was read', () => {
     expect(rows.map((r) => [r.string.name, r.stage, r.outcome])).toEqual([
@@ -256,9 +266,22 @@ describe('the list of readings', () => {
         ],
       }),
     ]);
-    expect(readingRows(page(earthed).sheet)[0]).toMatchObject({
+    expect(read(earthed)[0]).toMatchObject({
       outcome: 'finding',
       earth: { outcome: 'fault' },
     });
+  });
+
+  it('judges again what strings measured since say more about, and only that', () => {
+    const [before] = judged([string('A1', { readings: [reading(495)] })]);
+    const { finding } = before!.readings[0]!;
+    const beside = ['A2', 'A3', 'A4', 'A5'].map((name) => string(name, { readings: [reading(555)] }));
+    const rows = read([before!, ...beside]);
+    expect(rows[0]).toMatchObject({ outcome: finding.outcome, headline: finding.headline });
+    expect(rows[0]!.now?.siblings).toEqual(['A2', 'A3', 'A4', 'A5']);
+    expect(rows[0]!.now?.headline).not.toBe(finding.headline);
+    expect(read([before!])[0]?.now).toBeNull();
+    // what nobody has judged yet is judged here, and is no second judgement
+    expect(rows[2]).toMatchObject({ stringId: 'A2', outcome: 'as_expected', now: null });
   });
 });

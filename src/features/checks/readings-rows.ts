@@ -1,68 +1,39 @@
-import { judgedNow } from '../../domain/commissioning/readings/judged-now';
-import { stagesFor, type ReadingStage } from '../../domain/commissioning/readings/stages';
-import type { ReadingFinding } from '../../schemas/api/readings';
-import type { CaptureSnapshot, CaptureString } from '../../schemas/api/capture';
-import type { ReadingsView } from '../../schemas/api/checks-page';
+import type { ReadingStage } from '../../domain/commissioning/readings/stages';
+import type { CaptureString } from '../../schemas/api/capture';
+import type { ReadingsPage, ReadingsView } from '../../schemas/api/checks-page';
 
 /** Strings by stage with what was read there, as the desk lists them. */
 
 export type ReadingHere = CaptureString['readings'][number];
-export type Outcome = ReadingFinding['outcome'] | 'unread';
+type StageRead = ReadingsPage['stages'][number];
+export type Outcome = StageRead['outcome'];
 
-export interface ReadingRow {
+export interface ReadingRow extends StageRead {
   key: string;
   string: CaptureString;
-  stage: ReadingStage;
   between: ReadingHere | null;
   positive: ReadingHere | null;
   negative: ReadingHere | null;
-  outcome: Outcome;
-  headline: string;
-  /** What the two readings to earth say together; null: not both taken. */
-  earth: ReadingFinding['earth'];
-  /** Judged with what has been recorded since, where that says more than was known then; null: it does not. */
-  now: ReadingFinding | null;
-}
-
-function rowOf(sheet: CaptureSnapshot, string: CaptureString, stage: ReadingStage): ReadingRow {
-  const at = (kind: ReadingHere['kind']): ReadingHere | null =>
-    string.readings.find((r) => r.stage === stage && r.kind === kind) ?? null;
-  const [between, positive, negative] = [
-    at('positive_to_negative'),
-    at('positive_to_earth'),
-    at('negative_to_earth'),
-  ];
-  const later = between && judgedNow(sheet, string.id, between);
-  const known = between?.finding ?? later;
-  const lastEarth = negative && positive ? judgedNow(sheet, string.id, negative) : null;
-  const fault = lastEarth?.earth?.outcome === 'fault';
-  return {
-    key: `${string.id} ${stage}`,
-    string,
-    stage,
-    between,
-    positive,
-    negative,
-    outcome: fault ? 'finding' : (known?.outcome ?? 'unread'),
-    headline: fault ? (lastEarth?.headline ?? '') : (known?.headline ?? ''),
-    earth: lastEarth?.earth ?? null,
-    now:
-      between?.finding &&
-      later &&
-      later.siblings.length > between.finding.siblings.length &&
-      (later.outcome !== between.finding.outcome || later.headline !== between.finding.headline)
-        ? later
-        : null,
-  };
 }
 
 /** Every string at every stage that its type asks for, and at others where something was read all the same. */
-export function readingRows(sheet: CaptureSnapshot): ReadingRow[] {
-  return sheet.strings.flatMap((string) => {
-    const type = sheet.unitTypes.find((t) => t.id === string.unitTypeId);
-    const asked = type ? stagesFor(type) : [];
-    const more = string.readings.map((r) => r.stage).filter((s) => !asked.includes(s));
-    return [...new Set([...asked, ...more])].map((stage) => rowOf(sheet, string, stage));
+export function readingRows({ sheet, stages }: Pick<ReadingsPage, 'sheet' | 'stages'>): ReadingRow[] {
+  const strings = new Map(sheet.strings.map((s) => [s.id, s]));
+  return stages.flatMap((read) => {
+    const string = strings.get(read.stringId);
+    if (!string) return [];
+    const at = (kind: ReadingHere['kind']): ReadingHere | null =>
+      string.readings.find((r) => r.stage === read.stage && r.kind === kind) ?? null;
+    return [
+      {
+        ...read,
+        key: `${string.id} ${read.stage}`,
+        string,
+        between: at('positive_to_negative'),
+        positive: at('positive_to_earth'),
+        negative: at('negative_to_earth'),
+      },
+    ];
   });
 }
 

@@ -6,7 +6,7 @@ import { paths } from '../../schemas/paths';
 import type { StringRow } from './rows';
 
 export interface Signing {
-  sign: (rows: readonly StringRow[]) => Promise<void>;
+  sign: (rows: readonly Pick<StringRow, 'string'>[]) => Promise<void>;
   busy: boolean;
 }
 
@@ -16,7 +16,7 @@ export function useSigning(onDone: () => Promise<unknown>): Signing & { faults: 
   const [faults, setFaults] = useState<string[]>([]);
   // the same signature sent again after a broken connection is one signature
   const refs = useRef(new Map<string, string>());
-  const sign = async (rows: readonly StringRow[]) => {
+  const sign: Signing['sign'] = async (rows) => {
     setBusy(true);
     const refused: string[] = [];
     for (const { string } of rows) {

@@ -28,7 +28,7 @@ const names = (rows: readonly StringRow[]): string =>
 export function checksHeading(rows: readonly StringRow[]): string {
   const signed = rows.filter((r) => r.status === 'signed').length;
   if (rows.length === 0) return checksWords.noStringHasSlots;
-  if (rows.every((r) => r.state.recorded === 0)) return checksWords.noInstallCheckIs;
+  if (rows.every((r) => r.recorded === 0)) return checksWords.noInstallCheckIs;
   if (signed === rows.length)
     return rows.length === 1 ? checksWords.theOnlyStringIs : checksWords.allAreSignedOff(rows.length);
   if (signed === 0) return checksWords.noneOfIsSigned(rows.length);
@@ -38,8 +38,8 @@ export function checksHeading(rows: readonly StringRow[]): string {
 /** What follows: fire risks first, then what is amiss, then what can be signed. */
 export function checksSentence(rows: readonly StringRow[]): { strong: string; rest: string } {
   if (rows.length === 0) return { strong: '', rest: checksWords.drawOrImportThe };
-  const risk = rows.filter((r) => r.amiss.some((b) => b.kind === 'fire_risk'));
-  const amiss = rows.filter((r) => r.amiss.some((b) => b.kind !== 'fire_risk') && !risk.includes(r));
+  const risk = rows.filter((r) => r.amiss.includes('fire_risk'));
+  const amiss = rows.filter((r) => r.amiss.some((kind) => kind !== 'fire_risk') && !risk.includes(r));
   const ready = rows.filter((r) => r.status === 'ready');
   const stale = ready.filter((r) => r.string.signOff?.stale);
   const rest: string[] = [];

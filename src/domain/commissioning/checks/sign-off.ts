@@ -3,9 +3,11 @@ import { checksFor } from './list';
 import { judgeCheck } from './judge';
 import { CHECK_KEYS, type CheckContext, type CheckKey, type CheckStanding } from './definition';
 
+export const BLOCK_KINDS = ['missing', 'failed', 'contradicted', 'fire_risk'] as const;
+
 export interface SignOffBlock {
   check: CheckKey;
-  kind: 'missing' | 'failed' | 'contradicted' | 'fire_risk';
+  kind: (typeof BLOCK_KINDS)[number];
   words: string;
   remedy: string;
 }

@@ -2,13 +2,13 @@ import { readingInput } from '../../../../schemas/api/readings';
 import { siteParams } from '../../../../schemas/api/site';
 import { endpoint } from '../../../../server/http/endpoint';
 import { recordedReply } from '../../../../server/http/recorded-reply';
-import { checksPage } from '../../../../server/services/checks-page';
+import { readingsPage } from '../../../../server/services/checks-page';
 import { recordReading } from '../../../../server/services/record-reading';
 
 export const GET = endpoint(
   { permission: 'checks.read', params: siteParams },
   ({ tx, actor, params, context }) =>
-    checksPage(
+    readingsPage(
       tx,
       params.site,
       { id: context.locals.viewer?.id ?? '', name: context.locals.viewer?.name ?? '', role: actor.role },
