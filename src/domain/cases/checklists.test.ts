@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import { CASE_KINDS } from './cases';
-import { checklistItem, checklistOf } from './checklists';
+import { checklistItem, checklistLines, checklistOf } from './checklists';
 
 describe('checklists', () => {
   it.each(CASE_KINDS)('of %s: some lines, each once, each with its reason', (kind) => {
@@ -27,5 +27,19 @@ describe('checklists', () => {
 
   it('knows no line that is not there', () => {
     expect(checklistItem('toString')).toBeUndefined();
+  });
+
+  it('keep a line of another kind that somebody has ticked, and only then', () => {
+    const keys = (marks: { key: string; done: boolean }[]) =>
+      checklistLines('wrong_string', marks).map(({ key, own }) => [key, own]);
+    const own = checklistOf('wrong_string').map(({ key }) => [key, true]);
+    expect(keys([{ key: 'roster', done: true }])).toEqual(own);
+    expect(
+      keys([
+        { key: 'soiling', done: true },
+        { key: 'fuses', done: false },
+        { key: 'gone', done: true },
+      ]),
+    ).toEqual([...own, ['soiling', false]]);
   });
 });

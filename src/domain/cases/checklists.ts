@@ -36,3 +36,20 @@ export function checklistItem(key: string): ChecklistItem | undefined {
   const known = Object.keys(checklistTexts).find((k): k is ItemKey => k === key);
   return known && { key: known, ...checklistTexts[known] };
 }
+
+export interface ChecklistLine extends ChecklistItem {
+  /** Whether it is on the list of this kind. */
+  own: boolean;
+}
+/** The lines of a case: those of its kind, then what was ticked while it was of another. */
+export function checklistLines(
+  kind: CaseKind,
+  marks: readonly { key: string; done: boolean }[],
+): ChecklistLine[] {
+  const own = checklistOf(kind).map((item) => ({ ...item, own: true }));
+  const others = marks.flatMap((m) => {
+    const item = m.done && !own.some(({ key }) => key === m.key) ? checklistItem(m.key) : undefined;
+    return item ? [{ ...item, own: false }] : [];
+  });
+  return [...own, ...others];
+}

@@ -4,7 +4,7 @@ import { Caution } from '../../components/ui/Caution';
 import { Field } from '../../components/ui/Field';
 import { Sheet } from '../../components/ui/Sheet';
 import { RelativeTime } from '../../components/ui/Time';
-import { checklistItem, checklistOf, type ChecklistItem } from '../../domain/cases/checklists';
+import type { ChecklistItem } from '../../domain/cases/checklists';
 import { CHECKLIST_SOURCE } from '../../words/domain-checklists';
 import { listed } from '../../drawings/numbers';
 import type { CaseInHand } from './query';
@@ -13,13 +13,9 @@ import { checklistSheet } from '../../words/cases';
 /** What to look at before anybody is called. A line is ticked by itself, so that two people may go through it at once. */
 export function ChecklistSheet({ hand }: { hand: CaseInHand }) {
   const { case: c } = hand.page;
-  const own = checklistOf(c.kind);
-  const others = c.checklist.flatMap((m) =>
-    m.done && !own.some((item) => item.key === m.key) ? (checklistItem(m.key) ?? []) : [],
-  );
-  const items = [...own, ...others];
+  const items = c.lines;
   const done = items.filter((item) => c.checklist.some((m) => m.key === item.key && m.done)).length;
-  const cautions = [...new Set(own.flatMap((item) => item.caution ?? []))];
+  const cautions = [...new Set(items.flatMap((item) => (item.own ? (item.caution ?? []) : [])))];
   return (
     <Sheet
       id="checklist"

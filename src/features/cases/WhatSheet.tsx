@@ -1,16 +1,12 @@
-import { Suspense, useState } from 'react';
-import { Button } from '../../components/ui/Button';
-import { Field } from '../../components/ui/Field';
+import { Suspense } from 'react';
 import { Sheet } from '../../components/ui/Sheet';
 import type { CasePage } from '../../schemas/api/cases';
-import { TITLE_MAX, WHAT_MAX } from '../../schemas/lists-and-limits';
 import { late } from '../../lib/late';
 import { paths } from '../../schemas/paths';
 import type { CaseInHand } from './query';
-import { TextArea } from './TextArea';
 import { whatSheet } from '../../words/cases';
 
-const PartsPicker = late(async () => (await import('./PartsPicker')).PartsPicker);
+const WhatForm = late(async () => (await import('./WhatForm')).WhatForm);
 
 /** What is wrong and which parts it is about. */
 export function WhatSheet({
@@ -40,7 +36,9 @@ export function WhatSheet({
       }
     >
       {editing ? (
-        <EditForm hand={hand} onDone={() => onEdit(false)} />
+        <Suspense>
+          <WhatForm hand={hand} onDone={() => onEdit(false)} />
+        </Suspense>
       ) : c.what ? (
         <p className="max-w-[70ch] whitespace-pre-wrap text-[16px] leading-6 [overflow-wrap:anywhere]">
           {c.what}
@@ -50,72 +48,6 @@ export function WhatSheet({
       )}
       {!editing && <Parts page={hand.page} />}
     </Sheet>
-  );
-}
-
-function EditForm({ hand, onDone }: { hand: CaseInHand; onDone: () => void }) {
-  const { page, send, change } = hand;
-  // what was there when it was opened: only what this person changed is sent, so that nobody else's words are undone
-  const [began] = useState({
-    title: page.case.title,
-    what: page.case.what,
-    about: {
-      chosen: page.case.strings.map((s) => s.id),
-      parts: page.case.parts.map((p) => ({ string: p.stringId, position: p.position })),
-    },
-  });
-  const [title, setTitle] = useState(began.title);
-  const [what, setWhat] = useState(began.what);
-  const [about, setAbout] = useState(began.about);
-  return (
-    <form
-      className="grid gap-4"
-      noValidate
-      onSubmit={(event) => {
-        event.preventDefault();
-        change(
-          {
-            act: 'facts',
-            version: page.case.version,
-            ...(title === began.title ? {} : { title }),
-            ...(what === began.what ? {} : { what }),
-            ...(about === began.about ? {} : { strings: about.chosen, parts: about.parts }),
-          },
-          onDone,
-        );
-      }}
-    >
-      <Field
-        label={whatSheet.title}
-        value={title}
-        maxLength={TITLE_MAX}
-        error={send.error?.fault('title') ?? null}
-        onChange={(event) => setTitle(event.target.value)}
-      />
-      <TextArea
-        label={whatSheet.whatIsWrong}
-        value={what}
-        rows={6}
-        maxLength={WHAT_MAX}
-        error={send.error?.fault('what') ?? null}
-        onChange={setWhat}
-      />
-      <Suspense>
-        <PartsPicker
-          strings={page.strings}
-          chosen={about.chosen}
-          parts={about.parts}
-          error={send.error?.fault('strings') ?? send.error?.fault('parts') ?? null}
-          onChange={setAbout}
-        />
-      </Suspense>
-      <div className="flex flex-wrap gap-2">
-        <Button type="submit" weight="primary" disabled={send.isPending}>
-          {whatSheet.save}
-        </Button>
-        <Button onClick={onDone}>{whatSheet.leaveItAsIt}</Button>
-      </div>
-    </form>
   );
 }
 

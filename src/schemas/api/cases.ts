@@ -7,6 +7,7 @@ import {
   type CasePart,
   type CheckOutcome,
 } from '../../domain/cases/cases';
+import type { ChecklistLine } from '../../domain/cases/checklists';
 import type { CaseFigures } from '../../domain/cases/figures';
 import { id } from './now';
 import { CASE_SORTS, TITLE_MAX, WHAT_MAX, COMMENT_MAX } from '../lists-and-limits';
@@ -125,6 +126,8 @@ export interface CasePage {
     cause: { id: string; headline: string; open: boolean } | null;
     parts: CasePart[];
     checklist: ChecklistMark[];
+    /** The lines to go through, and those of another kind's list that somebody has ticked. */
+    lines: ChecklistLine[];
     before: CaseFigures | null;
     after: (CaseFigures & { outcome: CheckOutcome }) | null;
     checkedAt: string | null;

@@ -1,5 +1,6 @@
 import type { Actor } from '../../domain/access/permissions';
 import { caseKindOf } from '../../domain/cases/cases';
+import { checklistLines } from '../../domain/cases/checklists';
 import {
   CLOSED_DAYS,
   type CaseDraft,
@@ -53,6 +54,7 @@ export async function casePage(tx: Tx, actor: Actor, ref: string, at: Date): Pro
       cause: kept.cause,
       parts: kept.parts,
       checklist: kept.checklist,
+      lines: checklistLines(kept.item.kind, kept.checklist),
       before: kept.before,
       after: kept.after,
       checkedAt: kept.checkedAt,
