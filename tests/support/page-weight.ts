@@ -16,6 +16,8 @@ export interface PageWeight {
   first: number;
   /** What comes when a chart nears the screen, beyond `first`; 0: the page has no chart. */
   chart: number;
+  /** Each island that is fetched once it is scrolled to, with what it brings beyond `first`. */
+  visible: [name: string, bytes: number][];
   /** The files of `first`, the heaviest first, with their gzip bytes. */
   files: [name: string, bytes: number][];
 }
@@ -86,9 +88,15 @@ function closure(all: Map<string, Script>, names: Iterable<string>): Set<string>
   return found;
 }
 
+interface Parts {
+  now: Set<string>;
+  /** Islands that are fetched when they are scrolled to. */
+  visible: Set<string>;
+}
+
 /** Islands and scripts of an .astro file and of those that it is made of, as paths under the root without ending. */
-function partsOf(file: string, seen = new Set<string>()): Set<string> {
-  const parts = new Set<string>();
+function partsOf(file: string, seen = new Set<string>()): Parts {
+  const parts: Parts = { now: new Set(), visible: new Set() };
   if (seen.has(file)) return parts;
   seen.add(file);
   const text = fs.readFileSync(path.join(ROOT, file), 'utf8');
@@ -106,15 +114,18 @@ function partsOf(file: string, seen = new Set<string>()): Set<string> {
           path.posix.join(path.posix.dirname(file), from),
         );
   for (const from of imported.values())
-    if (from.endsWith('.astro')) for (const part of partsOf(from, seen)) parts.add(part);
+    if (from.endsWith('.astro')) {
+      const inside = partsOf(from, seen);
+      for (const part of inside.now) parts.now.add(part);
+      for (const part of inside.visible) parts.visible.add(part);
+    }
   for (const [, name = '', when = ''] of text.matchAll(/<(\w+)[^>]*?\sclient:(\w+)/g)) {
-    if (when === 'visible') continue; // fetched when it is scrolled to
     const from = imported.get(name);
     if (!from) throw new Error(`${file}: the island ${name} is not imported by name.`);
-    parts.add(from.replace(/\.tsx?$/, ''));
+    (when === 'visible' ? parts.visible : parts.now).add(from.replace(/\.tsx?$/, ''));
   }
   const hoisted = [...text.matchAll(/^\s*<script(?![^>]*is:inline)[^>]*>/gm)].length;
-  for (let k = 0; k < hoisted; k++) parts.add(`${file}?astro&type=script&index=${k}&lang.ts`);
+  for (let k = 0; k < hoisted; k++) parts.now.add(`${file}?astro&type=script&index=${k}&lang.ts`);
   return parts;
 }
 
@@ -133,7 +144,8 @@ export async function pageWeights(): Promise<PageWeight[]> {
     .filter((name) => name.endsWith('.astro'))
     .sort();
   return pages.map((page) => {
-    const parts = [...partsOf(`src/pages/${page}`)];
+    const { now, visible } = partsOf(`src/pages/${page}`);
+    const parts = [...now];
     const islands = parts.filter((part) => !part.includes('?'));
     const names = parts.flatMap((part) => {
       const name = nameOf(part);
@@ -151,10 +163,16 @@ export async function pageWeights(): Promise<PageWeight[]> {
       [...late].flatMap((name) => [name, ...(all.get(name)?.later ?? [])]),
     );
     const chart = withLate.has(canvas) ? closure(all, [canvas]) : new Set<string>();
+    const beyond = (part: string): number => {
+      const name = nameOf(part);
+      if (!name || !renderer) throw new Error(`${page}: the build has no file of ${part}.`);
+      return sum([...closure(all, [name, renderer])].filter((file) => !first.has(file)));
+    };
     return {
       page,
       first: sum(first),
       chart: sum([...chart].filter((name) => !first.has(name))),
+      visible: [...visible].map((part): [string, number] => [path.posix.basename(part), beyond(part)]),
       files: [...first]
         .map((name): [string, number] => [name, all.get(name)?.bytes ?? 0])
         .sort((a, b) => b[1] - a[1]),
