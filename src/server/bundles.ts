@@ -27,9 +27,7 @@ export function bundles(): Plugin {
     },
     buildEnd(error) {
       if (!error && left.size > 0)
-        this.error(
-          `The chart library no longer imports ${[...left].join(', ')}: see server/chart-library.ts.`,
-        );
+        this.error(`server/chart-library.ts: not in the library: ${[...left].join(', ')}`);
     },
     // none of ours does anything by being imported: a list made at the top of a file goes where the file goes
     transform: (_, id) => (OURS.test(id) ? { moduleSideEffects: false } : null),
