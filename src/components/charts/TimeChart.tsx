@@ -3,16 +3,16 @@ import { lazy, Suspense, useCallback, useRef, useState, type KeyboardEvent, type
 import type { Span } from './Canvas';
 import { ChartLegend } from './ChartLegend';
 import { ChartSketch } from './ChartSketch';
-import { ChartTable } from './ChartTable';
 import { saveCsv } from './chart-csv';
 import { toWall } from './local-time';
 import { useNear, useWidth } from './near';
 import type { ChartModel } from './model';
-import { picture } from './picture';
 import { readout } from './options';
+import { late, patiently } from '../../lib/late';
 import { timeChart } from '../../words/charts';
 
 const Canvas = lazy(() => import('./Canvas'));
+const ChartTable = late(async () => (await import('./ChartTable')).ChartTable);
 
 interface Props {
   model: ChartModel;
@@ -111,7 +111,9 @@ export function TimeChart({
   const savePicture = () => {
     const instance = chart.current;
     if (!instance || instance.isDisposed()) return;
-    void picture(instance, model, figure.current).then((url) => {
+    const drawn = patiently(() => import('./picture'));
+    void drawn.then(async ({ picture }) => {
+      const url = await picture(instance, model, figure.current);
       const link = document.createElement('a');
       link.href = url;
       link.download = `${fileName}.png`;
@@ -171,7 +173,9 @@ export function TimeChart({
       {/* a canvas keeps its old width until it hears of the new one: it must not push the page meanwhile */}
       <div className="[overflow-x:clip]" style={{ minHeight: height }}>
         {asTable ? (
-          <ChartTable model={model} height={height} />
+          <Suspense>
+            <ChartTable model={model} height={height} />
+          </Suspense>
         ) : near && width > 0 ? (
           <Suspense fallback={<ChartSketch model={model} height={height} />}>
             <Canvas
