@@ -10,7 +10,7 @@ const build = 'tests/setup/build.ts';
 export default defineConfig({
   test: {
     experimental: { fsModuleCache: true }, // each project would make the same modules anew
-    maxWorkers: 4, // of two cores: journeys mostly wait, for plants and for the server
+    maxWorkers: 5, // of two cores: journeys and killed workers mostly wait, for plants, the server, the clock
     sequence: { sequencer: Order },
     restoreMocks: true,
     expect: { poll: { timeout: 20_000 } }, // by itself a second, which a busy machine misses

@@ -3,7 +3,7 @@ import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import type { Role } from '../../src/domain/access/permissions';
 import { newToken, tokenHash } from '../../src/server/auth/secret-link';
 import { axeFaults } from '../support/axe';
-import { headingsOf, hydrated, settled, signedInContext, startBrowser } from '../support/browser';
+import { headingsOf, hydrated, settled, signedInContext, startLooking } from '../support/browser';
 import { testDatabase, type TestDatabase } from '../support/database';
 import { testFleet, type TestFleet } from '../support/fleet';
 import { startSite, type RunningSite } from '../support/server';
@@ -56,7 +56,7 @@ beforeAll(async () => {
       [fleet.site(CLINIC).id, kiosk, tokenHash(token)],
     );
   site = await startSite(db, { WAKELINE_ROLES: 'web' });
-  browser = await startBrowser();
+  browser = await startLooking();
 });
 afterAll(async () => {
   await browser.close();

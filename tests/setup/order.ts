@@ -10,6 +10,7 @@ const FIRST = [
   'e2e/whole-job',
   'e2e/commissioning',
   'e2e/pages',
+  'integration/jobs-killed',
   'e2e/roll-call',
   'integration/truth',
 ];
