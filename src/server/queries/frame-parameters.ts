@@ -124,10 +124,11 @@ export function maskWords(state: readonly (number | null)[]): [high: number, low
   let high = 0;
   for (let i = 0; i < state.length; i++) {
     if (state[i] === null) continue;
-    if (i < 32) low += 2 ** i;
-    else high += 2 ** (i - 32);
+    // shifts, and no powers, which are reckoned as such: this is asked of every reading
+    if (i < 32) low |= 1 << i;
+    else high |= 1 << (i - 32);
   }
-  return [high, low];
+  return [high >>> 0, low >>> 0];
 }
 
 /** The same as text: 63 bits do not fit a double. */
