@@ -132,7 +132,7 @@ describe('an error of the database', () => {
       client: 'pg',
       connection: db.ingestUrl,
       pool: { min: 0, max: 1 },
-      acquireConnectionTimeout: 50,
+      acquireConnectionTimeout: 3000, // the first has to come within it, on a busy machine too
       log: { warn: () => undefined }, // it would say so itself
     });
     try {
