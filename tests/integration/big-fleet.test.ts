@@ -163,6 +163,22 @@ describe('a seeded fleet', () => {
       await stick(first, false);
     });
 
+    it('leaves no site out that changed while others were read', async () => {
+      const ids = await idsOf();
+      const [first = 0, second = 0] = ids;
+      const kept = new KeptSites(() => true);
+      await standing(kept, ids);
+      for (const meanwhile of [() => kept.changed([second]), () => kept.missed()]) {
+        kept.changed([first]);
+        const standings = await asIngest((tx) => {
+          const reading = kept.read(tx, NOW, ids);
+          meanwhile();
+          return reading;
+        });
+        expect(standings).toHaveLength(SITES);
+      }
+    });
+
     it('is read ahead of the next look', async () => {
       const ids = await idsOf();
       const [first = 0] = ids;

@@ -64,10 +64,17 @@ export class KeptSites {
   async read(tx: Tx, at: Date, siteIds: readonly number[]): Promise<SiteStanding[]> {
     const nowMs = at.getTime();
     if (!this.hears()) return inOrder(siteIds, await readSites(tx, at, siteIds));
-    const asked = siteIds.filter((id) => (this.kept.get(id)?.untilMs ?? 0) <= nowMs);
-    for (const id of siteIds) this.wanted.set(id, nowMs);
-    const read = asked.length > 0 ? await this.readAndKeep(tx, at, asked) : new Map<number, SiteStanding>();
-    return inOrder(siteIds, { get: (id) => read.get(id) ?? this.kept.get(id) });
+    // taken before anything is waited for: what changes meanwhile is no longer kept then
+    const standings = new Map<number, SiteStanding>();
+    for (const id of siteIds) {
+      this.wanted.set(id, nowMs);
+      const kept = this.kept.get(id);
+      if (kept && kept.untilMs > nowMs) standings.set(id, kept);
+    }
+    const asked = siteIds.filter((id) => !standings.has(id));
+    if (asked.length > 0)
+      for (const [id, standing] of await this.readAndKeep(tx, at, asked)) standings.set(id, standing);
+    return inOrder(siteIds, standings);
   }
 
   /** Reads anew what changed or is about to be old, of the sites that were asked for lately: whoever asks next need not wait. */
@@ -101,10 +108,7 @@ export class KeptSites {
   }
 }
 
-const inOrder = (
-  siteIds: readonly number[],
-  found: { get: (id: number) => SiteStanding | undefined },
-): SiteStanding[] =>
+const inOrder = (siteIds: readonly number[], found: ReadonlyMap<number, SiteStanding>): SiteStanding[] =>
   siteIds.flatMap((id) => {
     const standing = found.get(id);
     return standing ? [{ site: standing.site, causes: standing.causes }] : [];
