@@ -20,6 +20,18 @@ const LAST_CHARACTER = '\u{10ffff}';
 /** So many strings that begin so are looked at for the best ones: every site may have an A1. */
 const STRINGS_LOOKED_AT = 400;
 
+/** One string after the other by its number: a join of all of them with what is visible would look at every string. */
+const STRINGS_NAMED = `(select strings_named(:name, :nameEnd, :looked) as id offset 0) found
+      cross join lateral (
+        select site.ref as site_ref, site.name as site, site.place, s.ref, s.name
+        from string s join site on site.id = s.site_id
+        where s.id = found.id and ${SITE_VISIBLE} limit 1) x`;
+const STRINGS_AT_SITE = `(
+        select site.ref as site_ref, site.name as site, site.place, s.ref, s.name
+        from string s join site on site.id = s.site_id
+        where ${SITE_VISIBLE} and upper(s.name) like upper(:last)
+          and (lower(site.name) like lower(:site) or lower(site.name) like '% ' || lower(:site))) x`;
+
 /**
  * Sites by the beginning of any word of their name or place, strings by the beginning of theirs ("B3", or
  * "Kestrel B3" within a site), units by the beginning of their serial. Serials and names go by index in their order, looked
@@ -39,19 +51,9 @@ export async function search(tx: Tx, text: string, limit: number): Promise<Searc
              or lower(site.place) like lower(:whole) or lower(site.place) like '% ' || lower(:whole))
       order by lower(site.name) not like lower(:whole), site.name limit :limit)
      union all
-     (select 'string', site.ref, site.name, site.place, s.ref, s.name, null, null
-      from ${
-        withSite === ''
-          ? 'strings_named(:name, :nameEnd, :looked) found join string s on s.id = found'
-          : 'string s'
-      } join site on site.id = s.site_id
-      where ${SITE_VISIBLE} and ${
-        withSite === ''
-          ? 'true'
-          : `upper(s.name) like upper(:last)
-        and (lower(site.name) like lower(:site) or lower(site.name) like '% ' || lower(:site))`
-      }
-      order by length(s.name), s.name, site.name limit :limit)
+     (select 'string', x.site_ref, x.site, x.place, x.ref, x.name, null, null
+      from ${withSite === '' ? STRINGS_NAMED : STRINGS_AT_SITE}
+      order by length(x.name), x.name, x.site limit :limit)
      union all
      (select 'unit', x.ref, x.site, x.place, x."stringRef", x.string, u.serial, x.position
       from (select id, serial from unit
