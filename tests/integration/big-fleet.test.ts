@@ -9,7 +9,7 @@ import { asActor, asIngest } from '../../src/server/db/transaction';
 import { sitesNow } from '../../src/server/queries/sites-now';
 import { causesNow } from '../../src/server/services/causes';
 import { readFleet, readShutdown } from '../../src/server/services/fleet';
-import { KeptSites, type SiteStanding } from '../../src/server/services/kept-sites';
+import { KeptSites, type FleetStanding } from '../../src/server/services/kept-sites';
 import { readLowOutput } from '../../src/server/services/low-output';
 import { testDatabase, type TestDatabase } from '../support/database';
 
@@ -88,8 +88,10 @@ describe('a seeded fleet', () => {
          where string_id = (select min(id) from string where site_id = $1)`,
         [siteId, stuck ? 1 : 0, stuck ? 2 : 1],
       );
-    const isStuck = (standings: readonly SiteStanding[], at: number) =>
-      standings[at]?.causes.some((c) => c.units.some((u) => u.position === 1 && c.verdict === 'stuck'));
+    const isStuck = ({ sites, causes }: FleetStanding, at: number) =>
+      causes.some(
+        (c) => c.siteId === sites[at]?.id && c.verdict === 'stuck' && c.units.some((u) => u.position === 1),
+      );
 
     it('is what a fresh reading says, in the order asked for, without sites that are gone', async () => {
       const ids = await idsOf();
@@ -99,12 +101,10 @@ describe('a seeded fleet', () => {
       };
       const kept = new KeptSites(() => true);
       for (const _ of ['read', 'kept']) {
-        const standings = await standing(kept, ids);
-        expect(standings.map((s) => s.site)).toEqual(fresh.sites);
-        expect(standings.flatMap((s) => s.causes)).toEqual(fresh.causes);
+        expect(await standing(kept, ids)).toEqual(fresh);
       }
       const turned = await standing(kept, [ids[2] ?? 0, 999_999, ids[0] ?? 0]);
-      expect(turned.map((s) => s.site.id)).toEqual([fresh.sites[2]?.id, fresh.sites[0]?.id]);
+      expect(turned.sites.map((s) => s.id)).toEqual([fresh.sites[2]?.id, fresh.sites[0]?.id]);
     });
 
     it('holds until somebody tells of a change, or for a minute', async () => {
@@ -118,7 +118,7 @@ describe('a seeded fleet', () => {
       kept.changed([first]);
       const told = await standing(kept, ids);
       expect(isStuck(told, 0)).toBe(true);
-      expect(told[0]?.site).toEqual((await asIngest((tx) => sitesNow(tx, NOW, [first])))[0]);
+      expect(told.sites[0]).toEqual((await asIngest((tx) => sitesNow(tx, NOW, [first])))[0]);
       expect(isStuck(told, 1)).toBe(false);
       expect(isStuck(await standing(kept, ids, new Date(NOW.getTime() + 60_000)), 1)).toBe(true);
       await stick(first, false);
@@ -170,12 +170,12 @@ describe('a seeded fleet', () => {
       await standing(kept, ids);
       for (const meanwhile of [() => kept.changed([second]), () => kept.missed()]) {
         kept.changed([first]);
-        const standings = await asIngest((tx) => {
+        const { sites } = await asIngest((tx) => {
           const reading = kept.read(tx, NOW, ids);
           meanwhile();
           return reading;
         });
-        expect(standings).toHaveLength(SITES);
+        expect(sites).toHaveLength(SITES);
       }
     });
 

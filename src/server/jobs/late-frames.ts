@@ -95,11 +95,7 @@ async function mergeIntoSingle(
   await ensureDaysAhead(db, day, day);
   const queue = late.map(itemOf);
   while (queue.length > 0)
-    await writeFrames(
-      client,
-      takeBatch(queue).frames.sort((a, b) => a.stringId - b.stringId || a.at - b.at),
-      new Date(now.getTime() - ROLLED_UP_AFTER_S * 1000),
-    );
+    await writeFrames(client, takeBatch(queue).frames, new Date(now.getTime() - ROLLED_UP_AFTER_S * 1000));
   await dropLateFrames(
     db,
     late.map((l) => l.id),

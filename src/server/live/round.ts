@@ -197,8 +197,8 @@ async function readFleet(
   if (wanted.length === 0) return null;
   const kept = keptSites();
   return {
-    sites: (await kept.read(tx, at, wanted)).map((s) => s.site),
-    causes: (await kept.read(tx, at, [...visible])).flatMap((s) => s.causes),
+    sites: (await kept.read(tx, at, wanted)).sites,
+    causes: (await kept.read(tx, at, [...visible])).causes,
   };
 }
 

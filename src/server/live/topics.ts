@@ -6,7 +6,6 @@ import {
   eventsBetween,
   newestEvents,
   rollCallOpen,
-  visibleSites,
   visibleStringNumbers,
   type LiveEvent,
 } from '../queries/live';
@@ -14,7 +13,7 @@ import { noticesNow } from '../queries/notices';
 import { gatewaysNow, invertersNow, stringsNow } from '../queries/now';
 import { answersOf } from '../queries/roll-call';
 import { sitesNow } from '../queries/sites-now';
-import { visibleSite } from '../queries/visible-site';
+import { visibleSite, visibleSites } from '../queries/visible-site';
 import { causesNow } from '../services/causes';
 import { keptSites } from '../services/kept-sites';
 import { topicRefusals } from '../../words/refusals';
@@ -87,10 +86,7 @@ export const serialsHeard = (events: readonly LiveEvent[]): string[] =>
 
 async function stateOf(tx: Tx, subject: Subject, at: Date): Promise<Change> {
   if (subject.kind === 'notices') return { notices: await noticesNow(tx, subject.personId) };
-  if (subject.kind === 'fleet') {
-    const standings = await keptSites().read(tx, at, [...subject.siteIds]);
-    return { sites: standings.map((s) => s.site), causes: standings.flatMap((s) => s.causes) };
-  }
+  if (subject.kind === 'fleet') return keptSites().read(tx, at, [...subject.siteIds]);
   const { siteId } = subject;
   if (subject.kind === 'string')
     return {

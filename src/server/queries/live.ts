@@ -88,14 +88,6 @@ export async function visibleStringNumbers(
   return rows[0];
 }
 
-/** Every site that the actor may see. */
-export async function visibleSites(tx: Tx): Promise<{ id: number; ref: string }[]> {
-  const { rows } = await tx.raw<{ rows: { id: number; ref: string }[] }>(
-    `select id, ref from site where ${SITE_VISIBLE}`,
-  );
-  return rows;
-}
-
 /** Whether a roll call is open at a site. */
 export async function rollCallOpen(tx: Tx, siteId: number): Promise<boolean> {
   const { rows } = await tx.raw<{ rows: unknown[] }>(

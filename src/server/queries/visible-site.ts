@@ -28,12 +28,12 @@ export async function visibleSite(tx: Tx, ref: string): Promise<VisibleSite | un
   return rows[0];
 }
 
-/** Numbers of all sites that the actor may see, by name. */
-export async function visibleSiteNumbers(tx: Tx): Promise<number[]> {
-  const { rows } = await tx.raw<{ rows: { id: number }[] }>(
-    `select id from site where ${SITE_VISIBLE} order by name, id`,
+/** Every site that the actor may see, by name. */
+export async function visibleSites(tx: Tx): Promise<{ id: number; ref: string }[]> {
+  const { rows } = await tx.raw<{ rows: { id: number; ref: string }[] }>(
+    `select id, ref from site where ${SITE_VISIBLE} order by name, id`,
   );
-  return rows.map((r) => r.id);
+  return rows;
 }
 
 /** Public identifiers of sites by their numbers; whoever calls has checked that they may be seen. */

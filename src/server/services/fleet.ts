@@ -2,7 +2,7 @@ import type { FleetNow, SinceLastLook } from '../../schemas/api/fleet';
 import type { ShutdownNow } from '../../schemas/api/shutdown';
 import type { Tx } from '../db/transaction';
 import { acknowledgementsOf, contactsOf, missedSince, noteLook } from '../queries/fleet';
-import { visibleSiteNumbers } from '../queries/visible-site';
+import { visibleSites } from '../queries/visible-site';
 import { keptSites } from './kept-sites';
 
 /** The sites of a fleet, or of a page of it, with what explains what is amiss there. */
@@ -10,12 +10,8 @@ export type Standing = Pick<FleetNow, 'at' | 'sites' | 'causes'>;
 
 /** Every site that the actor sees, as it stands, with what to act on. */
 export async function readStanding(tx: Tx, at: Date): Promise<Standing> {
-  const standings = await keptSites().read(tx, at, await visibleSiteNumbers(tx));
-  return {
-    at: at.toISOString(),
-    sites: standings.map((s) => s.site),
-    causes: standings.flatMap((s) => s.causes),
-  };
+  const ids = (await visibleSites(tx)).map((s) => s.id);
+  return { at: at.toISOString(), ...(await keptSites().read(tx, at, ids)) };
 }
 
 /** The sites that shutdown is about: those with a cause, or with something other than a release in force. */
@@ -24,38 +20,31 @@ export function aboutShutdown(standing: Standing): Standing {
   return { ...standing, sites: standing.sites.filter((s) => concerned.has(s.id) || s.commands.length > 0) };
 }
 
-/** Adds whom to call at these sites, and who has taken these causes on. */
-export async function withPeople<S extends Pick<Standing, 'causes'>>(
-  tx: Tx,
-  standing: S,
-  siteRefs: Iterable<string>,
-): Promise<S & Pick<FleetNow, 'contacts' | 'acknowledgements'>> {
-  return {
-    ...standing,
-    contacts: await contactsOf(tx, [...new Set(siteRefs)]),
-    acknowledgements: await acknowledgementsOf(tx, standing.causes),
-  };
-}
+/** The fleet or its first page, with whom to call where there is a cause, and who has taken each on. */
+export const fleetWithPeople = (tx: Tx, standing: Standing): Promise<FleetNow> =>
+  withPeople(tx, standing, [...new Set(standing.causes.map((c) => c.siteId))]);
 
-/** The whole fleet, as it stands. */
-export async function readFleet(tx: Tx, at: Date): Promise<FleetNow> {
-  const standing = await readStanding(tx, at);
-  return withPeople(
-    tx,
-    standing,
-    standing.causes.map((c) => c.siteId),
-  );
-}
-
-/** The part of the fleet that shutdown is about. */
-export async function readShutdown(tx: Tx, at: Date): Promise<ShutdownNow> {
-  const standing = aboutShutdown(await readStanding(tx, at));
-  return withPeople(
+/** What shutdown is about or its first page, with whom to call at each site, and who has taken each cause on. */
+export const shutdownWithPeople = (tx: Tx, standing: Standing): Promise<ShutdownNow> =>
+  withPeople(
     tx,
     standing,
     standing.sites.map((s) => s.id),
   );
-}
+
+const withPeople = async (tx: Tx, standing: Standing, siteRefs: readonly string[]): Promise<FleetNow> => ({
+  ...standing,
+  contacts: await contactsOf(tx, siteRefs),
+  acknowledgements: await acknowledgementsOf(tx, standing.causes),
+});
+
+/** The whole fleet, as it stands. */
+export const readFleet = async (tx: Tx, at: Date): Promise<FleetNow> =>
+  fleetWithPeople(tx, await readStanding(tx, at));
+
+/** The part of the fleet that shutdown is about. */
+export const readShutdown = async (tx: Tx, at: Date): Promise<ShutdownNow> =>
+  shutdownWithPeople(tx, aboutShutdown(await readStanding(tx, at)));
 
 /** So many lines fit before the causes without pushing them off a laptop's screen. */
 const MISSED_MAX = 6;

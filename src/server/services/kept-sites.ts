@@ -15,8 +15,12 @@ const AHEAD_MS = 5_000;
 /** So many sites in one reading ahead: nobody waits behind it. */
 const AT_ONCE = 100;
 
-/** How a site stands: its line in lists, and what explains the units there that are not as they should be. */
-export interface SiteStanding {
+/** How sites stand: their lines in lists, and what explains the units there that are not as they should be. */
+export interface FleetStanding {
+  sites: SiteNow[];
+  causes: CauseNow[];
+}
+interface SiteStanding {
   site: SiteNow;
   causes: CauseNow[];
 }
@@ -61,7 +65,7 @@ export class KeptSites {
    * How the sites of these numbers stand, in their order; those that are gone are left out. Whoever calls has checked that
    * the actor may see them.
    */
-  async read(tx: Tx, at: Date, siteIds: readonly number[]): Promise<SiteStanding[]> {
+  async read(tx: Tx, at: Date, siteIds: readonly number[]): Promise<FleetStanding> {
     const nowMs = at.getTime();
     if (!this.hears()) return inOrder(siteIds, await readSites(tx, at, siteIds));
     // taken before anything is waited for: what changes meanwhile is no longer kept then
@@ -108,11 +112,10 @@ export class KeptSites {
   }
 }
 
-const inOrder = (siteIds: readonly number[], found: ReadonlyMap<number, SiteStanding>): SiteStanding[] =>
-  siteIds.flatMap((id) => {
-    const standing = found.get(id);
-    return standing ? [{ site: standing.site, causes: standing.causes }] : [];
-  });
+function inOrder(siteIds: readonly number[], found: ReadonlyMap<number, SiteStanding>): FleetStanding {
+  const standings = siteIds.flatMap((id) => found.get(id) ?? []);
+  return { sites: standings.map((s) => s.site), causes: standings.flatMap((s) => s.causes) };
+}
 
 async function readSites(tx: Tx, at: Date, siteIds: readonly number[]): Promise<Map<number, SiteStanding>> {
   if (siteIds.length === 0) return new Map();
