@@ -115,6 +115,7 @@ export const paths = {
     /** Notes on the time axis. */
     annotations: (site: string) => `/api/sites/${site}/annotations`,
     annotation: (site: string, annotation: string) => `/api/sites/${site}/annotations/${annotation}`,
+    lowOutput: () => '/api/low-output',
     lowOutputCsv: () => '/api/low-output.csv',
     savedViews: () => '/api/saved-views',
     savedView: (view: string) => `/api/saved-views/${view}`,

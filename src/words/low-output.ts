@@ -24,6 +24,8 @@ export const lowOutputPage = {
   strings: 'Strings',
   rowsOfRows: (rows: number, rows2: number) => `${number(rows)} of ${number(rows2)}`,
   rows: 'strings',
+  theOthersAreNot: 'the first ones; the others are not here yet',
+  theOthersCouldNot: 'The other strings could not be read: only the first ones are listed',
   findBySiteString: 'Find by site, string, plane or words',
   siteStringPlane: 'Site, string, plane',
   all: 'all',
@@ -33,6 +35,7 @@ export const lowOutputPage = {
   withACase: 'with a case',
   withoutACase: 'without a case',
   stringsThatMakeLess: 'Strings that make less than they should',
+  noneOfTheFirst: 'None of the first strings is like that; the others are not here yet.',
   noLowStringIs: 'No low string is like that. Take a filter away.',
   asEachStringsNewest:
     'As each string’s newest judged day found it, over the last five days with enough sun; figures of loss with their middle 90 %. Held against the strings of its plane, or against the model where fewer than five are alike.',

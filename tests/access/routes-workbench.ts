@@ -13,6 +13,7 @@ const ofString = (permission: 'string.read' | 'telemetry.export', part: string, 
 /** Routes of looking into a string, of notes on the time axis, of low strings and saved views. */
 export const WORKBENCH: readonly Route[] = [
   get('low-output.astro', 'cause.read', 'nothing', () => '/low-output'),
+  get('api/low-output.ts', 'cause.read', 'nothing', () => '/api/low-output'),
   get('api/low-output.csv.ts', 'cause.read', 'nothing', () => '/api/low-output.csv'),
   ofString('string.read', 'moment', `?at=${AT}`),
   ofString('string.read', 'heat'),

@@ -140,3 +140,49 @@ describe('from a low string to a link that shows what was seen', () => {
     expect(noise).toEqual([]);
   });
 });
+
+describe('a list of low strings that is longer than a page', () => {
+  const rows = () => page.locator('#low tbody tr').count();
+
+  beforeAll(async () => {
+    const { rows: made } = await db.owner.query<{ id: number }>(
+      `insert into string (site_id, name, plane_id, input_id, zone_id, logger_id, roster_index, unit_type_id, kind, slots)
+       select site_id, 'L' || n, plane_id, input_id, zone_id, logger_id, 1000 + n, unit_type_id, kind, slots
+       from string, generate_series(1, 60) n where id = $1 returning id`,
+      [fleet.site(HALL).strings.get('B3')?.id],
+    );
+    const columns =
+      'site_id, day, outcome, method, ratio, z, loss_wh, expected_wh, signature, finding, judged_at';
+    await db.owner.query(
+      `insert into output_day (string_id, ${columns})
+       select made, ${columns} from output_day, unnest($1::int4[]) made where string_id = $2 and outcome = 'low'`,
+      [made.map((m) => m.id), fleet.site(HALL).strings.get('B3')?.id],
+    );
+  });
+
+  it('is sent with its first rows, and has the others once somebody asks', async () => {
+    await page.setViewportSize({ width: 1440, height: 1000 });
+    await page.goto(`${site.url}/low-output?sort=string&order=up`);
+    await hydrated();
+    await page.getByText('61 of 61', { exact: true }).waitFor();
+    expect(await rows()).toBe(50);
+    expect((await page.content()).includes('L60')).toBe(false);
+    await press(page.getByRole('button', { name: 'Show more strings (50 of 61 shown)' }));
+    await expect.poll(rows).toBe(61);
+    expect(await faultsShown(page, 'all low strings', 1440)).toEqual([]);
+  });
+
+  it('is searched as a whole; without an answer it says that others are missing', async () => {
+    await page.goto(`${site.url}/low-output?sort=string&order=up`);
+    await hydrated();
+    await page.route('**/api/low-output', (route) => route.fulfill({ status: 500, body: 'no' }));
+    await page.getByLabel('Find by site, string, plane or words').fill('L60');
+    await page.getByText('The other strings could not be read: only the first ones are listed').waitFor();
+    expect(await page.getByText('None of the first strings is like that').count()).toBe(1);
+    await page.unroute('**/api/low-output');
+    await press(page.getByRole('button', { name: 'Try again' }));
+    await page.getByText('1 of 61', { exact: true }).waitFor();
+    expect(await rows()).toBe(1);
+    expect(noise.filter((line) => !line.includes('500'))).toEqual([]);
+  });
+});

@@ -1,16 +1,18 @@
-import { QueryClientProvider } from '@tanstack/react-query';
+import { QueryClientProvider, useQuery } from '@tanstack/react-query';
+import { useMemo, useState } from 'react';
 import { SavedViews } from '../../components/saved-views/SavedViews';
 import { ButtonLink } from '../../components/ui/Button';
 import { Choice } from '../../components/ui/Choice';
 import { Heading } from '../../components/ui/Heading';
 import { LongTable } from '../../components/ui/LongTable';
+import { NotRead } from '../../components/ui/NotRead';
 import { Notice } from '../../components/ui/Notice';
 import { SearchInput } from '../../components/ui/SearchInput';
 import { Sheet } from '../../components/ui/Sheet';
 import type { Column } from '../../components/ui/Table';
 import { energy, money, percent, UNKNOWN } from '../../drawings/numbers';
 import { shortDate } from '../../drawings/times';
-import { withQuery } from '../../lib/api';
+import { api, withQuery } from '../../lib/api';
 import { queryClient } from '../../lib/query-client';
 import { addressOf, useViewInUrl } from '../../lib/view-in-url';
 import {
@@ -23,11 +25,14 @@ import {
 } from '../../schemas/api/low-output-rows';
 import type { SavedView } from '../../schemas/api/saved-views';
 import { paths } from '../../schemas/paths';
-import { lowFinding, SIGNATURE_WORDS } from '../../words/low-output-sentences';
+import { SIGNATURE_WORDS } from '../../words/low-output-sentences';
 import { lowOutputPage } from '../../words/low-output';
+import { wholeOf, type Whole } from './first-page';
 
 interface Props {
-  low: LowOutput;
+  initial: LowOutput;
+  /** Of a large fleet, of which `initial` is the first page; null: it is all. */
+  whole: Whole | null;
   saved: SavedView[];
   view: LowOutputView;
   defaults: LowOutputView;
@@ -39,8 +44,7 @@ const between = (r: LowString): string =>
     ? ''
     : lowOutputPage.lossKWhDayLowToLossKWhDayHigh(r.lossKWhDayLow, r.lossKWhDayHigh);
 
-function columnsFor(low: LowOutput): Column<LowString>[] {
-  const priced = low.currency !== null && low.rows.some((r) => r.moneyDay !== null);
+function columnsFor(currency: string | null, priced: boolean): Column<LowString>[] {
   return [
     {
       key: 'string',
@@ -91,7 +95,7 @@ function columnsFor(low: LowOutput): Column<LowString>[] {
             numeric: true,
             sortable: true,
             from: 'sm' as const,
-            cell: (r: LowString) => money(r.moneyDay, low.currency ?? 'EUR'),
+            cell: (r: LowString) => money(r.moneyDay, currency ?? 'EUR'),
           },
         ]
       : []),
@@ -162,13 +166,26 @@ function columnsFor(low: LowOutput): Column<LowString>[] {
   ];
 }
 
-function Page({ low, saved, view: asked, defaults }: Props) {
+function Page({ initial, whole, saved, view: asked, defaults }: Props) {
   const [view, setView] = useViewInUrl(asked, defaults);
-  const rows = lowRows(low.rows, view);
-  const { heading, sentence } = lowFinding(low);
-  const sites = [...new Map(low.rows.map((r) => [r.site.id, r.site.name]))].sort((a, b) =>
-    a[1].localeCompare(b[1]),
-  );
+  const [allWanted, setAllWanted] = useState(false);
+  const {
+    data: low,
+    error,
+    isFetching,
+    refetch,
+  } = useQuery({
+    queryKey: ['low-output'],
+    queryFn: ({ signal }) => api<LowOutput>(paths.api.lowOutput(), { signal }),
+    initialData: initial,
+    initialDataUpdatedAt: 0,
+    // the rest of a large fleet is asked for by who wants to see other rows than the first
+    enabled: whole !== null && (allWanted || view !== asked),
+  });
+  const partly = low === initial ? whole : null;
+  const rows = useMemo(() => lowRows(low.rows, view), [low.rows, view]);
+  const told = useMemo(() => partly ?? wholeOf(low, view), [partly, low, view]);
+  const { heading, sentence } = told.finding;
   const query = addressOf('', view, defaults).replace(/^\?/, '');
   return (
     <>
@@ -178,7 +195,7 @@ function Page({ low, saved, view: asked, defaults }: Props) {
         sentence={sentence}
         actions={<ButtonLink href={withQuery(paths.api.lowOutputCsv(), { ...view })}>CSV</ButtonLink>}
       />
-      {low.rows.length === 0 ? (
+      {told.rows === 0 ? (
         <Notice kind={low.judged === 0 ? 'empty' : 'done'} title={heading}>
           {sentence}
         </Notice>
@@ -186,7 +203,11 @@ function Page({ low, saved, view: asked, defaults }: Props) {
         <Sheet
           id="low"
           title={lowOutputPage.strings}
-          aside={lowOutputPage.rowsOfRows(rows.length, low.rows.length)}
+          aside={
+            partly && (isFetching || view !== asked)
+              ? lowOutputPage.theOthersAreNot
+              : lowOutputPage.rowsOfRows(told.shown, told.rows)
+          }
           flush
         >
           <form
@@ -206,7 +227,7 @@ function Page({ low, saved, view: asked, defaults }: Props) {
               value={view.site}
               options={[
                 { value: 'all', label: lowOutputPage.all },
-                ...sites.map(([value, label]) => ({ value, label })),
+                ...told.sites.map(({ id, name }) => ({ value: id, label: name })),
               ]}
               onChange={(site) => setView({ site })}
             />
@@ -235,18 +256,25 @@ function Page({ low, saved, view: asked, defaults }: Props) {
           <div className="mb-3">
             <SavedViews list="low_output" path={paths.lowOutput()} query={query} initial={saved} />
           </div>
+          <NotRead error={error} title={lowOutputPage.theOthersCouldNot} onRetry={refetch} className="mb-3" />
           <LongTable
             caption={lowOutputPage.stringsThatMakeLess}
-            columns={columnsFor(low)}
+            columns={columnsFor(low.currency, told.priced)}
             rows={rows}
             what={lowOutputPage.rows}
+            of={view === asked ? partly?.shown : undefined}
+            onMore={() => setAllWanted(true)}
             rowKey={(r) => r.string.id}
             sorting={{ key: view.sort, descending: view.order === 'down' }}
             onSort={({ key, descending }) => {
               const sort = LOW_SORTS.find((k) => k === key);
               if (sort) setView({ sort, order: descending ? 'down' : 'up' });
             }}
-            empty={<p className="py-4 text-ink-2">{lowOutputPage.noLowStringIs}</p>}
+            empty={
+              <p className="py-4 text-ink-2">
+                {partly ? lowOutputPage.noneOfTheFirst : lowOutputPage.noLowStringIs}
+              </p>
+            }
           />
           <p className="mt-3 text-xs text-ink-3">{lowOutputPage.asEachStringsNewest}</p>
         </Sheet>
