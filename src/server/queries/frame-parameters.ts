@@ -66,7 +66,8 @@ function emptyArray({ oid, bytes }: typeof INT2 | typeof INT4, length: number): 
   return buffer.fill(element, HEADER_BYTES);
 }
 
-function int4Array(values: readonly number[]): Buffer {
+/** An int4[] as PostgreSQL receives it in binary form. */
+export function int4Array(values: readonly number[]): Buffer {
   const buffer = emptyArray(INT4, values.length);
   let offset = HEADER_BYTES + LENGTH_BYTES;
   for (const value of values) {

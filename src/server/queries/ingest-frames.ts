@@ -1,7 +1,7 @@
 import type pg from 'pg';
 import { VALUE_COLUMNS as COLUMNS, type ValueColumn as Column } from './frames';
 import { copyFrames } from './copy-frames';
-import { FRAMES_AS_ROWS, NEXT_PARAMETER, frameParameters } from './frame-parameters';
+import { FRAMES_AS_ROWS, NEXT_PARAMETER, frameParameters, int4Array } from './frame-parameters';
 import type { FrameRow } from './ingest-rows';
 
 /**
@@ -43,8 +43,7 @@ const dirty = `dirty as (
 const SEEN = `case when whole then array_fill(extract(epoch from at)::int4, array[cardinality(state)])
     else (select array_agg(case when s is null then 0 else extract(epoch from at)::int4 end order by o)
           from unnest(state) with ordinality u(s, o)) end`;
-const INSERT_NEWEST = `insert into string_state as l (string_id, site_id, at, mask, voltage_sum, power_sum, ${LIST}, seen)
-select string_id, site_id, at, mask, voltage_sum, power_sum, ${LIST}, ${SEEN} from x where newest`;
+const INSERT_NEWEST = `insert into string_state as l (string_id, site_id, at, mask, voltage_sum, power_sum, ${LIST}, seen)`;
 
 /** What the newest state becomes where `n` comes to it, slot by slot; `whole` says that all slots of n reported. */
 function newestFrom(n: string, whole: string, seen: string): string {
@@ -64,17 +63,28 @@ const saysNews = (
 ) => `(${n}.at > l.at or (${n}.at = l.at and (${n}.mask & ~l.mask) <> 0)
   or (${n}.at < l.at and exists (select from unnest(l.seen, ${seen}) u(a, b) where b > a)))`;
 
-/** Beside COPY: the newest frame of each string, one a string, and the quarters to roll up again. */
-const WRITE_NEWEST = `
-with ${FRAMES_AS_ROWS},
-dirty as (${MARK_DIRTY}
-  select to_timestamp(quarter), string_id from unnest($${NEXT_PARAMETER}::int4[], $${NEXT_PARAMETER + 1}::int4[]) d(quarter, string_id)
-  order by 1, 2 on conflict do nothing),
-known as (
-  update string_state l set ${newestFrom('n', 'n.whole', 'n.seen')}
-  from (select *, ${SEEN} seen from x offset 0) n
-  where l.string_id = n.string_id and ${saysNews('n', 'n.seen')})
-${INSERT_NEWEST} and not exists (select from string_state s where s.string_id = x.string_id)`;
+const UPDATE_NEWEST = `on conflict (string_id) do update set ${newestFrom('excluded', 'excluded.mask = ~((-1)::int8 << cardinality(excluded.state))', 'excluded.seen')}
+where ${saysNews('excluded', 'excluded.seen')}`;
+
+/**
+ * Beside COPY, for one day (its first instant and the one after it): the newest frame of each string, and the quarters to
+ * roll up again. Parameters: strings, their sites and times (epoch s), one a string; quarters (epoch s) and their strings.
+ * Frames are found where they were copied to: handed over again, their values would cost as much as the copying. What
+ * leads is what was handed over, whatever the tables' statistics say while they fill.
+ */
+const writeNewest = (from: string, to: string): string => `
+with dirty as (${MARK_DIRTY}
+  select to_timestamp(quarter), string_id from unnest($4::int4[], $5::int4[]) d(quarter, string_id)
+  order by 1, 2 on conflict do nothing)
+${INSERT_NEWEST}
+select string_id, site_id, at, mask, voltage_sum, power_sum, ${LIST}, ${SEEN}
+from (
+  select f.*, k.site_id, f.mask = ~((-1)::int8 << cardinality(f.state)) whole
+  from unnest($1::int4[], $2::int4[], $3::int4[]) k(string_id, site_id, epoch)
+  cross join lateral (select * from string_frame
+    where string_id = k.string_id and at = to_timestamp(k.epoch) and at >= '${from}' and at < '${to}' offset 0) f
+  offset 0) x
+${UPDATE_NEWEST}`;
 
 const WRITE_MERGING = `
 with ${FRAMES_AS_ROWS},
@@ -87,8 +97,8 @@ written as (
   returning f.string_id, f.at),
 ${dirty}
 ${INSERT_NEWEST}
-on conflict (string_id) do update set ${newestFrom('excluded', 'excluded.mask = ~((-1)::int8 << cardinality(excluded.state))', 'excluded.seen')}
-where ${saysNews('excluded', 'excluded.seen')}`;
+select string_id, site_id, at, mask, voltage_sum, power_sum, ${LIST}, ${SEEN} from x where newest
+${UPDATE_NEWEST}`;
 
 const ALREADY_THERE = '23505';
 /** Where frames come twice, more of them follow: a logger sends again what it is not sure of. */
@@ -97,8 +107,29 @@ const merging = new WeakMap<pg.ClientBase, number>();
 
 const QUARTER_S = 900;
 const DAY_S = 86_400;
-const dayName = (epochS: number): string =>
-  new Date(epochS * 1000).toISOString().slice(0, 10).replaceAll('-', '');
+/** Days since the epoch as text. */
+const instant = (day: number): string => new Date(day * DAY_S * 1000).toISOString();
+const dayName = (day: number): string => instant(day).slice(0, 10).replaceAll('-', '');
+
+/** What a connection has prepared by day, under names that do not come again. */
+const DAYS_PREPARED = 6;
+const prepared = new WeakMap<pg.ClientBase, { names: Map<number, string>; made: number }>();
+
+/** The name of a day's statement; those of days past are given up. */
+async function statementOf(client: pg.ClientBase, day: number): Promise<string> {
+  const of = prepared.get(client) ?? { names: new Map<number, string>(), made: 0 };
+  prepared.set(client, of);
+  const known = of.names.get(day);
+  if (known !== undefined) return known;
+  const [oldest] = of.names;
+  if (oldest && of.names.size >= DAYS_PREPARED) {
+    of.names.delete(oldest[0]);
+    await client.query(`deallocate ${oldest[1]}`);
+  }
+  const name = `write_newest_${++of.made}`;
+  of.names.set(day, name);
+  return name;
+}
 
 /**
  * Makes a batch durable. Outside a transaction: the form for new frames may fail and be followed by the other.
@@ -136,15 +167,22 @@ async function writeNew(client: pg.ClientBase, rows: readonly FrameRow[], dirtyB
     if (list) list.push(row);
     else days.set(day, [row]);
   }
-  const newest = rows.filter((row, i) => rows[i + 1]?.stringId !== row.stringId);
   await client.query('begin');
   try {
-    for (const [day, ofDay] of days) await copyFrames(client, dayName(day * DAY_S), ofDay);
-    await client.query({
-      name: 'write_newest',
-      text: WRITE_NEWEST,
-      values: [...frameParameters(newest), ...dirtyQuarters(rows, dirtyBefore)],
-    });
+    for (const [day, ofDay] of days) {
+      await copyFrames(client, dayName(day), ofDay);
+      const newest = ofDay.filter((row, i) => ofDay[i + 1]?.stringId !== row.stringId);
+      await client.query({
+        name: await statementOf(client, day),
+        text: writeNewest(instant(day), instant(day + 1)),
+        values: [
+          newest.map((r) => r.stringId),
+          newest.map((r) => r.siteId),
+          newest.map((r) => r.at),
+          ...dirtyQuarters(ofDay, dirtyBefore),
+        ].map(int4Array),
+      });
+    }
     await client.query('commit');
   } catch (error) {
     // where the connection is gone the server rolls back by itself
