@@ -139,3 +139,44 @@ it('is what a model says, whichever way frames come', async () => {
     { numRuns: 40 },
   );
 });
+
+it('is written day after day on one connection, which keeps no statement of days past', async () => {
+  const DAYS = 9;
+  await db.owner.query('truncate string_frame, string_state, rollup_dirty');
+  await ensureDays(client, new Date((startS - DAYS * 86_400) * 1000), new Date());
+  const frame = (day: number, minute: number): FrameRow => ({
+    ...rowOf({
+      string: day % 3,
+      minute,
+      slots: Array(SLOTS).fill(true) as boolean[],
+      value: day,
+      output: true,
+    }),
+    at: startS - (DAYS - day) * 86_400 + 60 * minute,
+  });
+  const day = (n: number): FrameRow[] => [frame(n, 0), frame(n, 1)];
+  const before = new Date((startS + 3600) * 1000);
+  // two days in one batch, then each by itself, and an old one at last
+  await writeFrames(client, [...day(1), ...day(4)], before);
+  for (const n of [2, 3, 5, 6, 7, 8]) await writeFrames(client, day(n), before);
+  await writeFrames(client, day(0), before);
+  const { rows } = await db.owner.query<{ id: number; atS: number; voltage: Values; frames: number }>(
+    `select string_id as id, extract(epoch from at)::int4 as "atS", voltage,
+       (select count(*)::int4 from string_frame f where f.string_id = s.string_id) as frames
+     from string_state s order by string_id`,
+  );
+  expect(rows).toEqual(
+    [6, 7, 8].map((n) => ({
+      id: strings[n % 3],
+      atS: frame(n, 1).at,
+      voltage: [n, n + 1, n + 2, n + 3, n + 4],
+      frames: 6,
+    })),
+  );
+  const { rows: dirty } = await db.owner.query<{ n: number }>('select count(*)::int4 as n from rollup_dirty');
+  expect(dirty[0]?.n).toBeGreaterThanOrEqual(DAYS);
+  const { rows: kept } = await client.query<{ n: number }>(
+    `select count(*)::int4 as n from pg_prepared_statements where name like 'write_newest%'`,
+  );
+  expect(kept[0]?.n).toBeLessThanOrEqual(6);
+});
