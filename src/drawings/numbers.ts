@@ -78,15 +78,25 @@ export const celsius = (value: Value, digits = 0): string =>
     : quantity(value, '°C', digits);
 export const decibelMilliwatts = (value: Value): string => quantity(value, 'dBm');
 export const irradiance = (value: Value): string => quantity(value, 'W/m²');
+const moneyFormats = new Map<string, Intl.NumberFormat>();
+function moneyFormat(currency: string, whole: boolean): Intl.NumberFormat {
+  const key = `${currency}${whole ? '' : '.'}`;
+  let found = moneyFormats.get(key);
+  if (!found) {
+    found = new Intl.NumberFormat(LOCALE, {
+      style: 'currency',
+      currency,
+      currencyDisplay: 'narrowSymbol',
+      ...(whole ? { maximumFractionDigits: 0 } : {}),
+    });
+    moneyFormats.set(key, found);
+  }
+  return found;
+}
 /** Money in a currency of ISO 4217: whole units from a hundred up, smaller sums with their parts. */
 export function money(value: Value, currency: string): string {
   if (!known(value)) return UNKNOWN;
-  const text = new Intl.NumberFormat(LOCALE, {
-    style: 'currency',
-    currency,
-    currencyDisplay: 'narrowSymbol',
-    ...(Math.abs(value) >= 100 ? { maximumFractionDigits: 0 } : {}),
-  }).format(Math.abs(value));
+  const text = moneyFormat(currency, Math.abs(value) >= 100).format(Math.abs(value));
   return value < 0 && /[1-9]/.test(text) ? `−${text}` : text;
 }
 /** A ratio 0 … 1 as per cent. */

@@ -13,8 +13,9 @@ import { siteStanding } from '../../src/server/services/causes-page';
 import { lookAtFleet, readFleet, readShutdown } from '../../src/server/services/fleet';
 import { readLowOutput } from '../../src/server/services/low-output';
 import { readEvents, readSite } from '../../src/server/services/site-page';
-import { readHistory } from '../../src/server/services/string-history';
-import { readString } from '../../src/server/services/string-page';
+import { knownString } from '../../src/server/services/string-axis';
+import { readKnownHistory } from '../../src/server/services/string-history';
+import { readKnownString } from '../../src/server/services/string-page';
 import { percentile, usedBy } from './fleet/process';
 import { plansOf } from './fleet/plans';
 import { loadOn, lookerAt, printer, say, stageFleet, type Looker, type Staged } from './fleet/stage';
@@ -96,8 +97,9 @@ function reading(page: Page, places: Places, looker: Looker): (tx: Tx) => Promis
   const now = new Date();
   const { site, string } = of(places.strings, 7);
   const history = (query: object) => async (tx: Tx) => {
-    await readString(tx, string, now, site);
-    await readHistory(tx, string, historyQuery.parse(query), now);
+    const known = await knownString(tx, string, site);
+    await readKnownString(tx, known, now);
+    await readKnownHistory(tx, known, historyQuery.parse(query), now);
   };
   return {
     fleet: async (tx: Tx) => {
@@ -120,7 +122,8 @@ function reading(page: Page, places: Places, looker: Looker): (tx: Tx) => Promis
 
 interface Cost {
   readingUs: number;
-  pages: Record<Page, number>;
+  /** Median, and what was sent. */
+  pages: Record<Page, { ms: number; kB: number }>;
 }
 
 /**
@@ -132,6 +135,8 @@ async function costOfReading(staged: Staged, pid: number, size: number): Promise
     duration: 120,
     ramp: BURST_S / 4,
     speed: (60 * BURST_READINGS_A_S) / size,
+    // a few loggers must not wait for answers before they send what many would
+    window: 200,
     shutdowns: 0,
     stuck: 0,
     drain: 20,
@@ -164,7 +169,7 @@ async function measure(db: pg.Client, size: number): Promise<Cost> {
     await allConnected(load);
     say(`${load.connected()} loggers report; reading pages`);
     // what a page costs grows with the fleet or it does not; a small one is read with as much load beside it
-    const pages = {} as Record<Page, number>;
+    const pages = {} as Cost['pages'];
     for (const page of PAGES) {
       const took: number[] = [];
       let bytes = 0;
@@ -173,8 +178,8 @@ async function measure(db: pg.Client, size: number): Promise<Cost> {
         bytes = Math.max(bytes, text.length);
         if (i >= WARM_UP) took.push(ms);
       }
-      pages[page] = percentile(took, 0.5);
-      figure(`${page}_${size}_p50_ms`, pages[page], 'ms');
+      pages[page] = { ms: percentile(took, 0.5), kB: bytes / 1000 };
+      figure(`${page}_${size}_p50_ms`, pages[page].ms, 'ms');
       figure(`${page}_${size}_p95_ms`, percentile(took, 0.95), 'ms');
       figure(`${page}_${size}_kb`, bytes / 1000, 'kB');
     }
@@ -205,14 +210,17 @@ await db.connect();
 try {
   const costs: { size: number; cost: Cost }[] = [];
   for (const size of SIZES) costs.push({ size, cost: await measure(db, size) });
-  // from each size to the next: a small fleet's page has fewer lines than fit on it, a large one's never more
+  // from each size to the next; a small fleet's page has fewer lines than fit on it, so also for as much of a page
   for (const [i, { size, cost }] of costs.entries()) {
     const smaller = costs[i - 1];
     if (!smaller) continue;
     const to = `${smaller.size}_to_${size}`;
     figure(`reading_growth_${to}`, cost.readingUs / smaller.cost.readingUs, 'ratio', 2);
-    for (const page of PAGES)
-      figure(`${page}_growth_${to}`, cost.pages[page] / smaller.cost.pages[page], 'ratio', 2);
+    for (const page of PAGES) {
+      const [now, before] = [cost.pages[page], smaller.cost.pages[page]];
+      figure(`${page}_growth_${to}`, now.ms / before.ms, 'ratio', 2);
+      figure(`${page}_growth_a_kb_${to}`, now.ms / now.kB / (before.ms / before.kB), 'ratio', 2);
+    }
   }
   say(`plans are in ${PLANS}`);
 } finally {

@@ -27,7 +27,7 @@ import type { SavedView } from '../../schemas/api/saved-views';
 import { paths } from '../../schemas/paths';
 import { SIGNATURE_WORDS } from '../../words/low-output-sentences';
 import { lowOutputPage } from '../../words/low-output';
-import { wholeOf, type Whole } from './first-page';
+import { toldOf, type Whole } from './first-page';
 
 interface Props {
   initial: LowOutput;
@@ -184,7 +184,7 @@ function Page({ initial, whole, saved, view: asked, defaults }: Props) {
   });
   const partly = low === initial ? whole : null;
   const rows = useMemo(() => lowRows(low.rows, view), [low.rows, view]);
-  const told = useMemo(() => partly ?? wholeOf(low, view), [partly, low, view]);
+  const told = useMemo(() => partly ?? toldOf(low), [partly, low]);
   const { heading, sentence } = told.finding;
   const query = addressOf('', view, defaults).replace(/^\?/, '');
   return (
@@ -206,7 +206,7 @@ function Page({ initial, whole, saved, view: asked, defaults }: Props) {
           aside={
             partly && (isFetching || view !== asked)
               ? lowOutputPage.theOthersAreNot
-              : lowOutputPage.rowsOfRows(told.shown, told.rows)
+              : lowOutputPage.rowsOfRows(partly ? partly.shown : rows.length, told.rows)
           }
           flush
         >

@@ -163,6 +163,8 @@ function siteOf(place: Place, parts: Parts, at: Date, performanceRatio: number |
 
 // thirty days change little in a quarter of an hour, and /live asks often
 const RATIO_KEPT_MS = 15 * 60_000;
+/** Not of all sites of a fleet at once. */
+const RATIO_SPREAD_S = 300;
 const ratiosKept = new Map<number, { untilMs: number; ratio: number | null }>();
 
 /**
@@ -187,9 +189,12 @@ async function performanceRatios(
        group by d.site_id`,
       { asked: [...asked], at, from: new Date(at.getTime() - 30 * 86_400_000) },
     );
-    const untilMs = at.getTime() + RATIO_KEPT_MS;
     const found = new Map(rows.map((r) => [r.siteId, r.ratio]));
-    for (const id of asked) ratiosKept.set(id, { untilMs, ratio: found.get(id) ?? null });
+    for (const id of asked)
+      ratiosKept.set(id, {
+        untilMs: at.getTime() + RATIO_KEPT_MS + (id % RATIO_SPREAD_S) * 1000,
+        ratio: found.get(id) ?? null,
+      });
   }
   return new Map(siteIds.map((id) => [id, ratiosKept.get(id)?.ratio ?? null]));
 }

@@ -6,7 +6,7 @@ import type { ChartMark, StringHistory } from '../../schemas/api/string';
 import type { Tx } from '../db/transaction';
 import { AppError } from '../errors';
 import { worksOfString } from '../queries/annotations';
-import type { StringFacts } from '../queries/string-facts';
+import { siblingsOf, stringFacts, type Sibling, type StringFacts } from '../queries/string-facts';
 import { commandsOfZone, eventsOfString, type HistoryPoint } from '../queries/string-history';
 import { staysOf } from '../queries/string-units';
 import { axisWords } from '../../words/refusals-history';
@@ -17,6 +17,22 @@ const HOUR_S = 3600;
 const DAY_S = 24 * HOUR_S;
 
 export const noSuchString = (): AppError => new AppError('not_found', { message: axisWords.noSuchString });
+
+/** A string and those it is held against, for a page's several questions about it. */
+export interface KnownString {
+  facts: StringFacts;
+  siblings: Sibling[];
+}
+
+/**
+ * The string of this public identifier, at this site where one is named.
+ * @throws AppError not_found alike for what does not exist and what is another organisation's
+ */
+export async function knownString(tx: Tx, ref: string, siteRef?: string): Promise<KnownString> {
+  const facts = await stringFacts(tx, ref);
+  if (!facts || (siteRef !== undefined && facts.siteRef !== siteRef)) throw noSuchString();
+  return { facts, siblings: await siblingsOf(tx, facts) };
+}
 
 export interface Plan {
   from: Date;

@@ -6,7 +6,7 @@ import { temperatureCellNoct } from '../../domain/photovoltaics/temperature/cell
 import type { HistoryQuantity, HistoryQuery, HistoryRange, StringHistory } from '../../schemas/api/string';
 import type { Tx } from '../db/transaction';
 import { AppError } from '../errors';
-import { siblingsOf, stringFacts, type Sibling, type StringFacts } from '../queries/string-facts';
+import type { Sibling, StringFacts } from '../queries/string-facts';
 import { importedDays, importedSteps, whereNothingElse } from '../queries/history-readings';
 import {
   dayBounds,
@@ -20,7 +20,16 @@ import {
   stringQuarters,
   type HistoryPoint,
 } from '../queries/string-history';
-import { gapFrom, marksOf, nightsOf, noSuchString, planFor, withGaps, type Plan } from './string-axis';
+import {
+  gapFrom,
+  knownString,
+  marksOf,
+  nightsOf,
+  planFor,
+  withGaps,
+  type KnownString,
+  type Plan,
+} from './string-axis';
 import { historyWords } from '../../words/refusals-history';
 
 const DAYS: Record<HistoryRange, number> = { day: 1, week: 7, month: 31, year: 366 };
@@ -220,14 +229,20 @@ async function importedOver(
  * A string's voltage, current or power over a day, week, month or year, or over a part of it more finely.
  * @throws AppError not_found, or invalid where only one end of a part is given
  */
-export async function readHistory(
+export const readHistory = async (
   tx: Tx,
   ref: string,
   query: HistoryQuery,
   now: Date,
+): Promise<StringHistory> => readKnownHistory(tx, await knownString(tx, ref), query, now);
+
+/** The same of a string that was found. @throws AppError invalid */
+export async function readKnownHistory(
+  tx: Tx,
+  { facts, siblings }: KnownString,
+  query: HistoryQuery,
+  now: Date,
 ): Promise<StringHistory> {
-  const facts = await stringFacts(tx, ref);
-  if (!facts) throw noSuchString();
   const bounds = await dayBounds(tx, query.on ?? null, now, facts.timeZone, DAYS[query.range]);
   const part = partOf(query);
   let plan = planFor(part?.from ?? bounds.from, part?.to ?? bounds.to, facts.reportIntervalS);
@@ -244,7 +259,6 @@ export async function readHistory(
   }
   const imported = await importedOver(tx, facts, plan, query.quantity, points);
   if (plan.resolution === 'day' && query.quantity === 'current') kept.push(historyWords.noSingleCurrent);
-  const siblings = await siblingsOf(tx, facts);
   const compared = await comparedWith(tx, facts, plan, query, siblings);
   return {
     range: query.range,

@@ -4,9 +4,9 @@ import type { StringPage } from '../../schemas/api/string';
 import type { Tx } from '../db/transaction';
 import { stringsNow } from '../queries/now';
 import { planeWords } from '../../domain/output/plane-words';
-import { openCaseOf, siblingsOf, stringFacts, stringNames, type StringFacts } from '../queries/string-facts';
+import { openCaseOf, stringNames } from '../queries/string-facts';
 import { dayBounds, energyAgainst, eventsOfString } from '../queries/string-history';
-import { noSuchString } from './string-axis';
+import { knownString, noSuchString, type KnownString } from './string-axis';
 import { stringPageWords } from '../../words/refusals-history';
 
 const EVENT_DAYS = 14;
@@ -20,7 +20,7 @@ const REPORTS_MIN = 10;
  */
 async function lostToday(
   tx: Tx,
-  facts: StringFacts,
+  { facts, siblings }: KnownString,
   string: StringNow,
   at: Date,
 ): Promise<StringPage['lostToday']> {
@@ -30,7 +30,6 @@ async function lostToday(
   if (facts.kind === 'shutdown_only' || since.length === 0) return null;
   const today = await dayBounds(tx, null, at, facts.timeZone, 1);
   const from = new Date(Math.max(today.from.getTime(), Math.min(...since.map((s) => new Date(s).getTime()))));
-  const siblings = await siblingsOf(tx, facts);
   const rows = await energyAgainst(
     tx,
     facts.id,
@@ -54,9 +53,12 @@ async function lostToday(
  * Everything that the page of a string shows now.
  * @throws AppError not_found alike for what does not exist and what is another organisation's
  */
-export async function readString(tx: Tx, ref: string, at: Date, siteRef?: string): Promise<StringPage> {
-  const facts = await stringFacts(tx, ref);
-  if (!facts || (siteRef !== undefined && facts.siteRef !== siteRef)) throw noSuchString();
+export const readString = async (tx: Tx, ref: string, at: Date): Promise<StringPage> =>
+  readKnownString(tx, await knownString(tx, ref), at);
+
+/** The same of a string that was found. @throws AppError not_found: it is gone since */
+export async function readKnownString(tx: Tx, known: KnownString, at: Date): Promise<StringPage> {
+  const { facts, siblings } = known;
   const [string] = await stringsNow(tx, at, { stringIds: [facts.id] });
   if (!string) throw noSuchString();
   const names = await stringNames(tx, facts.siteId);
@@ -85,7 +87,7 @@ export async function readString(tx: Tx, ref: string, at: Date, siteRef?: string
     moduleType: facts.module.name,
     light: { poaGlobal: facts.poaGlobal, temperatureModule: facts.temperatureModule },
     evidence: { units, finding: facts.evidence?.finding ?? null },
-    lostToday: await lostToday(tx, facts, string, at),
+    lostToday: await lostToday(tx, known, string, at),
     neighbours: { previous: names[nth - 1] ?? null, next: names[nth + 1] ?? null },
     events: await eventsOfString(
       tx,
@@ -93,7 +95,7 @@ export async function readString(tx: Tx, ref: string, at: Date, siteRef?: string
       { from: new Date(at.getTime() - EVENT_DAYS * 86_400_000), to: new Date(at.getTime() + 60_000) },
       40,
     ),
-    siblings: (await siblingsOf(tx, facts)).map((s) => ({ id: s.ref, name: s.name })),
+    siblings: siblings.map((s) => ({ id: s.ref, name: s.name })),
     openCase: await openCaseOf(tx, facts),
   };
 }
