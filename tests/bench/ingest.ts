@@ -21,7 +21,8 @@ const STRINGS = 25;
 const UNITS = 20;
 const MINUTES = Number(process.env.BENCH_MINUTES ?? 120);
 const WARM_UP_MINUTES = 3;
-const WINDOW = 4;
+/** Messages of each logger on the way without an answer: fewer than the site can have in work leave it waiting. */
+const WINDOW = 8;
 
 const say = (text: string) => process.stderr.write(`${text}\n`);
 const figure = (name: string, value: number, unit: string, digits = 3) =>

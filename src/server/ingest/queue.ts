@@ -3,9 +3,12 @@ import { meters } from '../observe/meters';
 import { Lane } from './lane';
 import type { Written } from './write-batch';
 
-/** Readings that may wait before sockets are paused, and how far they must fall before sockets go on. */
-export const PAUSE_ABOVE = 60_000;
-export const RESUME_BELOW = 30_000;
+/**
+ * Readings that may wait before sockets are paused, and how far they must fall before sockets go on: enough for each lane
+ * to write one batch while its next one is read, a few ten MB.
+ */
+export const PAUSE_ABOVE = 120_000;
+export const RESUME_BELOW = 80_000;
 const LANES = 3;
 
 export interface QueueHooks {
