@@ -185,10 +185,10 @@ describe('when something breaks in between', () => {
   });
 
   it('the queue is full: come back later, and nothing is kept in memory meanwhile', async () => {
-    const at = nowS() - 6 * 3600;
+    const at = nowS() - 9 * 3600;
     const other = await TestLogger.arrive(sockets, token, serial);
     const letGo = await holdFrames();
-    for (let k = 0; k < 500; k++) other.report(minute(at + 30 * k));
+    for (let k = 0; k < 1000; k++) other.report(minute(at + 30 * k));
     await until(async () => (ingest()?.figures().pauses ?? 0) > 0, 'the queue is full', 15_000);
     const before = ingest()?.figures().waitingReadings;
     expect(await logger.post([minute(at - 60)])).toMatchObject({ status: 503, retryAfter: '2' });
