@@ -170,7 +170,7 @@ async function measure(db: pg.Client, size: number): Promise<Cost> {
     const load = loadOn(staged, PORT, { duration: 600, ramp: Math.max(2, size / 10_000) });
     await allConnected(load);
     say(`${load.connected()} loggers report; reading pages`);
-    // what a page costs grows with the fleet or it does not; a small one is read with as much load beside it
+    // beside the fleet's own reports, which grow with it
     const pages = {} as Cost['pages'];
     for (const page of PAGES) {
       const took: number[] = [];
