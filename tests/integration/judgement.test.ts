@@ -264,4 +264,40 @@ describe('at night', () => {
     expect(new Set(now.state)).toEqual(new Set(['dark']));
     expect((await events(name)).filter((e) => e.kind === 'units_silent')).toEqual([]);
   });
+
+  it('also where another process serves the logger, by what its inverters report there', async () => {
+    const { name } = rosterString(4);
+    const { site, serial, db } = world;
+    const stringId = idOf(name);
+    await leave(world);
+    // as after a start: the last that this process reads of the logger's units is three hours old
+    const strings = [...site.strings.values()].map((s) => s.id);
+    await db.owner.query('delete from string_judgement where string_id = any ($1)', [strings]);
+    await db.owner.query(
+      `delete from string_frame where string_id = any ($1) and at > now() - interval '2 hours'`,
+      [strings],
+    );
+    const { rowCount } = await db.owner.query(
+      `update logger set leased_by = 'elsewhere:1', leased_until = now() + interval '5 minutes', last_spoke_at = now()
+       where serial = $1`,
+      [serial],
+    );
+    expect(rowCount).toBe(1);
+    world = await enter(db, fleet.site(OTHER_SITE));
+    const stateOf = async () =>
+      (
+        await db.owner.query<{ state: string }>(
+          'select state[1] as state from string_judgement where string_id = $1',
+          [stringId],
+        )
+      ).rows.map((r) => UNIT_STATES[Number(r.state)])[0];
+    await until(async () => (await stateOf()) === 'passing', 'its last frame is judged');
+    await db.owner.query(
+      `insert into input_state (input_id, site_id, at, voltage, current)
+       select input_id, $2, now(), 0, 0 from string where id = $1
+       on conflict (input_id) do update set at = excluded.at, voltage = 0, current = 0`,
+      [stringId, site.id],
+    );
+    await until(async () => (await stateOf()) === 'dark', 'the string is dark', 45_000);
+  });
 });

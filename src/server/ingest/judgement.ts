@@ -33,10 +33,18 @@ const FRAMES_A_READ = 400;
 /** A string that was never judged is judged from so long ago on, seconds. */
 const FIRST_LOOK_BACK_S = 6 * 3600;
 
+export interface LoggerProgress {
+  logger: KnownLogger;
+  /** Wall-clock ms of its newest message. */
+  spokeAt: number;
+  newestS: number;
+  waiting: boolean;
+}
+
 export interface JudgementHost {
   notices: Notices;
   /** The loggers that this process serves. */
-  progress: () => { logger: KnownLogger; spokeAt: number; newestS: number }[];
+  progress: () => LoggerProgress[];
 }
 
 /**
@@ -370,15 +378,16 @@ export class Judgement {
     return (loggerId) => {
       if (loggerId === null) return { served: false, sinceS: this.startedS };
       const p = served.get(loggerId);
-      if (p) return { served: true, spokeS: Math.floor(p.spokeAt / 1000), newestS: p.newestS };
+      if (p) return { ...p, served: true, spokeS: Math.floor(p.spokeAt / 1000) };
       const spokeS = this.elsewhere.spokeS.get(loggerId);
       if (spokeS === undefined)
         return { served: false, sinceS: this.lastServedS.get(loggerId) ?? this.startedS };
       this.lastServedS.set(loggerId, nowS);
       let newestS = 0;
       for (const { string, memory } of judge.strings.values())
-        if (string.loggerId === loggerId) newestS = Math.max(newestS, memory.atS);
-      return { served: true, spokeS, newestS };
+        if (string.loggerId === loggerId)
+          newestS = Math.max(newestS, memory.atS, this.judgedInputs.get(string.inputId) ?? 0);
+      return { served: true, spokeS, newestS, waiting: false };
     };
   }
 }

@@ -11,6 +11,8 @@ import { Days, GatewaysHeard, writeBatch, type Written } from './write-batch';
 export interface LaneHooks {
   /** After COMMIT and the acknowledgements. What it gives is waited for before the next batch. */
   written: (batch: Batch, written: Written) => Promise<void> | void;
+  /** What was written was judged too, or could not be: nothing of these waits any more. */
+  followed: (items: readonly Item[]) => void;
   /** Readings left the queue. */
   relieved: (readings: number) => void;
   /** The database does not answer; called at every try, and every few seconds while one takes long. */
@@ -99,6 +101,8 @@ export class Lane {
       meters().judged.observe((performance.now() - committedAtMs) / 1000);
     } catch (error) {
       log.error({ error }, 'what follows a written batch failed');
+    } finally {
+      this.hooks.followed(batch.finished);
     }
   }
 

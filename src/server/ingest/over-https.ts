@@ -35,8 +35,6 @@ interface Presence {
   logger: KnownLogger;
   /** Wall-clock ms of its last batch. */
   spokeAt: number;
-  /** Epoch s of its newest report of anything. */
-  newestS: number;
   heldUntil: number;
 }
 type Counted = Exclude<LoggerMessage, { type: 'hello' }>;
@@ -131,11 +129,9 @@ export class OverHttps {
     await spokeByHttps(db, { loggerId: logger.id, address, firmware: null, holdS });
     const now = new Date();
     await touchTokens(db, [{ tokenId: logger.tokenId, at: now, address }]);
-    const before = this.presences.get(logger.id);
     const presence: Presence = {
       logger,
       spokeAt: now.getTime(),
-      newestS: before && before.heldUntil > now.getTime() ? before.newestS : 0,
       heldUntil: now.getTime() + holdS * 1000,
     };
     this.presences.set(logger.id, presence);
@@ -216,8 +212,6 @@ export class OverHttps {
         reason: 'there was no room for it within 10 s',
         again: true,
       });
-    for (const row of read.value.work.rows)
-      if ('at' in row) batch.presence.newestS = Math.max(batch.presence.newestS, row.at);
     this.enqueue(batch, index, seq, read.value);
   }
 

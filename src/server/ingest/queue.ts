@@ -13,6 +13,7 @@ const LANES = 3;
 
 export interface QueueHooks {
   written: (batch: Batch, written: Written) => Promise<void> | void;
+  followed: (items: readonly Item[]) => void;
   /** Sockets are to stop or to go on. */
   pressure: (paused: boolean) => void;
   away: () => void;
@@ -34,6 +35,7 @@ export class Queue {
       () =>
         new Lane({
           written: hooks.written,
+          followed: hooks.followed,
           away: hooks.away,
           relieved: (readings) => this.relieve(readings),
         }),

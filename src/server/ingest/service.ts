@@ -17,9 +17,10 @@ import { CHANNELS, readLeased, readWritten } from '../queries/live-notices';
 import { endedTokens, touchTokens } from '../queries/ingest-tokens';
 import { currentRoster, rosterVersion } from '../queries/roster';
 import type { Batch } from './batch';
-import { Judgement } from './judgement';
+import { Judgement, type LoggerProgress } from './judgement';
 import { Notices } from './notices';
 import { OverHttps } from './over-https';
+import { Reports } from './progress';
 import { Queue } from './queue';
 import { Refusals } from './refusals';
 import { Session, type SessionHost } from './session';
@@ -48,6 +49,7 @@ export class Ingest implements SessionHost {
   /** The session that serves each logger. */
   private readonly serving = new Map<number, Session>();
   private readonly notices = new Notices();
+  private readonly reports = new Reports();
   private readonly judgement: Judgement;
   private readonly queue: Queue;
   private readonly listener: Listener;
@@ -63,17 +65,20 @@ export class Ingest implements SessionHost {
       notices: this.notices,
       // a logger on both ways: its connection says more of it, and comes last
       progress: () => [
-        ...this.overHttps.progress(),
-        ...[...this.serving.values()].map(({ logger, spokeAt, newestS }) => ({ logger, spokeAt, newestS })),
+        ...this.overHttps.progress().map(({ logger, spokeAt }) => this.progressOf(logger, spokeAt)),
+        ...[...this.serving.values()].map(({ logger, spokeAt }) => this.progressOf(logger, spokeAt)),
       ],
     });
     this.queue = new Queue({
       written: (batch, written) => this.written(batch, written),
+      followed: (items) => {
+        for (const item of items) this.reports.left(item);
+      },
       pressure: (paused) => this.pressure(paused),
       away: () => this.tellAll(5000),
     });
     this.overHttps = new OverHttps({
-      enqueue: (item) => this.queue.add(item),
+      enqueue: (item) => this.enqueue(item),
       refused: (loggerId, field, reason) => this.refusals.add(loggerId, field, reason),
       full: () => this.queue.paused,
       changed: (siteId) => this.notices.changed([siteId], []),
@@ -174,6 +179,7 @@ export class Ingest implements SessionHost {
   }
 
   enqueue(item: Parameters<SessionHost['enqueue']>[0]): void {
+    this.reports.joined(item);
     this.queue.add(item);
   }
 
@@ -202,6 +208,11 @@ export class Ingest implements SessionHost {
     meters().readings.add(readings);
     meters().frames.add(batch.frames.length);
     await this.judgement.written(batch, written);
+  }
+
+  private progressOf(logger: KnownLogger, spokeAt: number): LoggerProgress {
+    const { newestS, waiting } = this.reports.of(logger.id);
+    return { logger, spokeAt, newestS, waiting: waiting || this.queue.paused };
   }
 
   private pressure(paused: boolean): void {

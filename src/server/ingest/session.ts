@@ -29,8 +29,6 @@ const PING_EVERY_MS = 20_000;
 export class Session {
   /** Wall-clock ms of the newest message. */
   spokeAt = Date.now();
-  /** Epoch s of the newest report of anything: how far the logger's reports have come. */
-  newestS = 0;
   private readonly views = new Map<number, RosterView>();
   private current: RosterView | undefined;
   private readonly backlog: { data: Buffer; isBinary: boolean }[] = [];
@@ -72,7 +70,11 @@ export class Session {
   setPaused(paused: boolean): void {
     this.paused = paused;
     if (paused) this.ws.pause();
-    else if (!this.busy) this.ws.resume();
+    else {
+      // what it could not say meanwhile it does not keep to itself
+      this.spokeAt = Date.now();
+      if (!this.busy) this.ws.resume();
+    }
   }
 
   /** Whether the logger has this version as its current one. */
@@ -185,8 +187,6 @@ export class Session {
       return;
     }
     const { work, readings, gateways } = read.value;
-    // by night only inverters and sensors report: they too show how far this logger's time has come
-    for (const row of work.rows) if ('at' in row) this.newestS = Math.max(this.newestS, row.at);
     this.host.enqueue({
       work,
       readings,
