@@ -144,6 +144,7 @@ export const stringsSheet = {
   weakestSignal: 'Weakest signal',
   position: (position: number) => `position ${position}`,
   strings: 'Strings',
+  what: 'strings',
   countedShownString: (shown: number) => counted(shown, 'string'),
   ofStrings: (strings: number) => ` of ${number(strings)}`,
   filterStringsByName: 'Filter strings by name or serial',

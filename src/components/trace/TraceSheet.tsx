@@ -1,3 +1,4 @@
+import { memo } from 'react';
 import { useQuery } from '@tanstack/react-query';
 import { Sheet } from '../ui/Sheet';
 import { Table, type Column } from '../ui/Table';
@@ -54,7 +55,7 @@ const columns = (limit: SiteTraces['limit']): Column<TraceFacts>[] => [
 ];
 
 /** Second by second after the newest command: lines, a sentence, and the same as a table. */
-export function TraceSheet({ siteId, stringId, timeZone }: Props) {
+export const TraceSheet = memo(function TraceSheet({ siteId, stringId, timeZone }: Props) {
   const client = queryClient();
   const key = ['traces', siteId, stringId ?? 'all'];
   const { data, error } = useQuery(
@@ -126,4 +127,4 @@ export function TraceSheet({ siteId, stringId, timeZone }: Props) {
       </p>
     </Sheet>
   );
-}
+});

@@ -1,3 +1,4 @@
+import { memo } from 'react';
 import { useQuery } from '@tanstack/react-query';
 import { ButtonLink } from '../../components/ui/Button';
 import { Notice } from '../../components/ui/Notice';
@@ -13,7 +14,13 @@ import { casesSheet } from '../../words/site';
 const EVERY_MS = 60_000;
 
 /** The cases of this site that are not closed. */
-export function CasesSheet({ site, initial }: { site: string; initial: readonly CaseItem[] }) {
+export const CasesSheet = memo(function CasesSheet({
+  site,
+  initial,
+}: {
+  site: string;
+  initial: readonly CaseItem[];
+}) {
   const { data: cases, error } = useQuery(
     {
       queryKey: ['site-cases', site],
@@ -64,4 +71,4 @@ export function CasesSheet({ site, initial }: { site: string; initial: readonly 
       </div>
     </Sheet>
   );
-}
+});

@@ -1,5 +1,5 @@
 import { useInfiniteQuery } from '@tanstack/react-query';
-import { useState } from 'react';
+import { memo, useState } from 'react';
 import { Button, ButtonLink } from '../../components/ui/Button';
 import { Choice } from '../../components/ui/Choice';
 import { NotRead } from '../../components/ui/NotRead';
@@ -64,7 +64,15 @@ interface Props {
 }
 
 /** What happened, newest first; one kind or all; older ones on demand. */
-export function EventsSheet({ site, initial, now, timeZone, zone, kind, onKind }: Props) {
+export const EventsSheet = memo(function EventsSheet({
+  site,
+  initial,
+  now,
+  timeZone,
+  zone,
+  kind,
+  onKind,
+}: Props) {
   const [first] = useState(kind);
   const { data, error, fetchNextPage, hasNextPage, isFetching, refetch } = useInfiniteQuery(
     eventsQuery(site, kind, kind === first ? initial : undefined),
@@ -109,4 +117,4 @@ export function EventsSheet({ site, initial, now, timeZone, zone, kind, onKind }
       )}
     </Sheet>
   );
-}
+});

@@ -39,7 +39,14 @@ export function FurtherSheets({ page, events, cases, kind, onKind, now, zone }: 
           kind={kind}
           onKind={onKind}
         />
-        <RadioSheet page={page} now={now} zone={zone} />
+        <RadioSheet
+          siteId={id}
+          gateways={page.gateways}
+          loggers={page.loggers}
+          now={now}
+          timeZone={timeZone}
+          zone={zone}
+        />
       </div>
     </>
   );

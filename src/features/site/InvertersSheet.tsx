@@ -1,3 +1,4 @@
+import { memo } from 'react';
 import { Notice } from '../../components/ui/Notice';
 import { Sheet } from '../../components/ui/Sheet';
 import { Tag, type Tone } from '../../components/ui/Tag';
@@ -27,7 +28,7 @@ interface Props {
 }
 
 /** Inverters with what they say of themselves, and their inputs. Their flags are theirs: Wakeline detects neither. */
-export function InvertersSheet({ inverters, now, timeZone, zone }: Props) {
+export const InvertersSheet = memo(function InvertersSheet({ inverters, now, timeZone, zone }: Props) {
   return (
     <Sheet
       id="inverters"
@@ -104,4 +105,4 @@ export function InvertersSheet({ inverters, now, timeZone, zone }: Props) {
       </div>
     </Sheet>
   );
-}
+});

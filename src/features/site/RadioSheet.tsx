@@ -1,3 +1,4 @@
+import { memo } from 'react';
 import { Notice } from '../../components/ui/Notice';
 import { Sheet } from '../../components/ui/Sheet';
 import { Tag } from '../../components/ui/Tag';
@@ -9,11 +10,24 @@ import { radioSheet } from '../../words/site';
 const line =
   'flex flex-wrap items-baseline justify-between gap-x-4 border-b border-rule-faint py-2 last:border-b-0';
 
+interface Props extends Pick<SitePage, 'gateways' | 'loggers'> {
+  siteId: string;
+  now: string;
+  timeZone: string;
+  zone: boolean;
+}
+
 /** Who hears the units and who reports them: gateways, learned from what is heard, and loggers. */
-export function RadioSheet({ page, now, zone }: { page: SitePage; now: string; zone: boolean }) {
-  const { gateways, loggers, site } = page;
+export const RadioSheet = memo(function RadioSheet({
+  siteId,
+  gateways,
+  loggers,
+  now,
+  timeZone,
+  zone,
+}: Props) {
   const at = (time: string | null) =>
-    time ? <SiteTime at={time} now={now} timeZone={site.timeZone} zone={zone} /> : 'never';
+    time ? <SiteTime at={time} now={now} timeZone={timeZone} zone={zone} /> : 'never';
   return (
     <Sheet id="radio" title={radioSheet.gatewaysAndLoggers} aside={radioSheet.gatewaysAreLearnedFrom}>
       {gateways.length === 0 && <Notice kind="empty" title={radioSheet.noGatewayHasBeen} />}
@@ -43,10 +57,7 @@ export function RadioSheet({ page, now, zone }: { page: SitePage; now: string; z
           </li>
         ))}
       </ul>
-      <a
-        className="target inline-flex items-center text-petrol hover:underline"
-        href={paths.loggers(site.id)}
-      >
+      <a className="target inline-flex items-center text-petrol hover:underline" href={paths.loggers(siteId)}>
         {radioSheet.tokensOfTheLoggers}
       </a>
       {gateways.some((g) => g.silent) && (
@@ -54,4 +65,4 @@ export function RadioSheet({ page, now, zone }: { page: SitePage; now: string; z
       )}
     </Sheet>
   );
-}
+});

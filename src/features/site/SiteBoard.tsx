@@ -1,5 +1,5 @@
 import { useQuery } from '@tanstack/react-query';
-import { useMemo } from 'react';
+import { useCallback, useMemo } from 'react';
 import { CauseSheet } from '../../components/causes/CauseSheet';
 import { byGravity } from '../../components/causes/words';
 import { Caution } from '../../components/ui/Caution';
@@ -56,6 +56,7 @@ export function SiteBoard({ initial, events, kind: initialKind, cases, standing,
   const { data: page, error, refetch } = useQuery(siteQuery(initial), client);
   const start = useMemo(() => ({ kind: initialKind }), [initialKind]);
   const [{ kind }, setView] = useViewInUrl<{ kind: KindWanted }>(start, DEFAULTS);
+  const onKind = useCallback((wanted: KindWanted) => setView({ kind: wanted }), [setView]);
   const status = useLive(`site:${id}`, (change, how) => {
     client.setQueryData<SitePage>(siteKey(id), (old) =>
       changedSite(old ?? initial, change, new Date().toISOString()),
@@ -165,7 +166,7 @@ export function SiteBoard({ initial, events, kind: initialKind, cases, standing,
           events={events}
           cases={cases}
           kind={kind}
-          onKind={(wanted) => setView({ kind: wanted })}
+          onKind={onKind}
           now={now}
           zone={zone}
         />

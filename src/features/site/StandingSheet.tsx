@@ -1,3 +1,4 @@
+import { memo } from 'react';
 import { Notice } from '../../components/ui/Notice';
 import { Sheet } from '../../components/ui/Sheet';
 import { SiteTime } from '../../components/ui/Time';
@@ -14,7 +15,7 @@ interface Props {
 }
 
 /** What stands beside the moment: works that go on or come, and what the nights have found. */
-export function StandingSheet({ siteId, standing, now, timeZone }: Props) {
+export const StandingSheet = memo(function StandingSheet({ siteId, standing, now, timeZone }: Props) {
   const { works, daily } = standing;
   const going = works.filter((w) => w.startsAt <= now && w.endsAt > now);
   return (
@@ -58,4 +59,4 @@ export function StandingSheet({ siteId, standing, now, timeZone }: Props) {
       )}
     </>
   );
-}
+});

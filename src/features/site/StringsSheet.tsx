@@ -1,9 +1,10 @@
-import { useMemo, useState } from 'react';
+import { memo, useMemo, useState } from 'react';
 import { StateTag } from '../../components/states/StateTag';
+import { LongTable } from '../../components/ui/LongTable';
 import { Notice } from '../../components/ui/Notice';
 import { SearchInput } from '../../components/ui/SearchInput';
 import { Sheet } from '../../components/ui/Sheet';
-import { Table, type Column } from '../../components/ui/Table';
+import type { Column } from '../../components/ui/Table';
 import { Tag } from '../../components/ui/Tag';
 import { Comb } from '../../drawings/Comb';
 import { amperes, decibelMilliwatts, power, volts } from '../../drawings/numbers';
@@ -158,7 +159,13 @@ const columnsFor = (site: string): Column<StringNow>[] => [
 ];
 
 /** Every string as a comb, with what its conductors carry and how it is heard. */
-export function StringsSheet({ site, strings }: { site: string; strings: readonly StringNow[] }) {
+export const StringsSheet = memo(function StringsSheet({
+  site,
+  strings,
+}: {
+  site: string;
+  strings: readonly StringNow[];
+}) {
   const [sorting, setSorting] = useState<{ key: StringSort; descending: boolean }>({
     key: 'need',
     descending: false,
@@ -196,7 +203,8 @@ export function StringsSheet({ site, strings }: { site: string; strings: readonl
           className="no-print mb-2 sm:w-[220px]"
         />
       )}
-      <Table
+      <LongTable
+        what={stringsSheet.what}
         caption={stringsSheet.stringsWithTheirUnits}
         columns={columns}
         rows={shown}
@@ -222,4 +230,4 @@ export function StringsSheet({ site, strings }: { site: string; strings: readonl
       />
     </Sheet>
   );
-}
+});

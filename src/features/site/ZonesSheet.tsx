@@ -1,3 +1,4 @@
+import { memo } from 'react';
 import { Notice } from '../../components/ui/Notice';
 import { Sheet } from '../../components/ui/Sheet';
 import { Table, type Column } from '../../components/ui/Table';
@@ -24,7 +25,7 @@ function InForce({ inForce }: Pick<CommandNow, 'inForce'>) {
 }
 
 /** What is commanded in which zone, since when and by whom, as the logger reported it. */
-export function ZonesSheet({
+export const ZonesSheet = memo(function ZonesSheet({
   zones,
   now,
   timeZone,
@@ -103,4 +104,4 @@ export function ZonesSheet({
       />
     </Sheet>
   );
-}
+});
