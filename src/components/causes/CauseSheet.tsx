@@ -1,4 +1,4 @@
-import type { ReactNode } from 'react';
+import { memo, type ReactNode } from 'react';
 import { fullTime } from '../../drawings/times';
 import type { Acknowledgement, AcknowledgeReply, SiteContact } from '../../schemas/api/fleet';
 import type { CauseNow } from '../../schemas/api/now';
@@ -59,7 +59,7 @@ function Where({ cause, begins }: { cause: CauseNow; begins: boolean }) {
 }
 
 /** One cause to act on, as a sheet: what, where, what it rests on, since when, and what it costs. */
-export function CauseSheet({
+export const CauseSheet = memo(function CauseSheet({
   cause,
   timeZone,
   now,
@@ -127,4 +127,4 @@ export function CauseSheet({
       {children && <div className="min-w-0">{children}</div>}
     </article>
   );
-}
+});

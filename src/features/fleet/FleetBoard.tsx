@@ -1,5 +1,5 @@
 import { useQuery } from '@tanstack/react-query';
-import { useMemo, useState } from 'react';
+import { useCallback, useMemo, useState } from 'react';
 import { CauseSheet } from '../../components/causes/CauseSheet';
 import { byGravity } from '../../components/causes/words';
 import { LiveHeading } from '../../components/ui/LiveHeading';
@@ -68,8 +68,11 @@ export function FleetBoard({ initial, whole, view: initialView, missed, timeZone
   const causes = useMemo(() => [...fleet.causes].sort(byGravity), [fleet.causes]);
   const zones = useMemo(() => new Map(fleet.sites.map((s) => [s.id, s.timeZone])), [fleet.sites]);
   const shownCauses = allCauses ? causes : causesAtFirst(causes);
-  const taken = (reply: AcknowledgeReply) =>
-    client.setQueryData<FleetNow>(fleetKey, (old) => withAcknowledgement(old ?? initial, reply));
+  const taken = useCallback(
+    (reply: AcknowledgeReply) =>
+      client.setQueryData<FleetNow>(fleetKey, (old) => withAcknowledgement(old ?? initial, reply)),
+    [client, initial],
+  );
 
   return (
     <>

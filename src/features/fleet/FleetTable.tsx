@@ -1,3 +1,4 @@
+import { useMemo } from 'react';
 import { Notice } from '../../components/ui/Notice';
 import { Table, type Column } from '../../components/ui/Table';
 import { Button } from '../../components/ui/Button';
@@ -18,7 +19,7 @@ function Open({ line, now }: { line: FleetLine; now: Date }) {
   return <span className={words === 'nothing' ? 'text-ink-2' : ''}>{words}</span>;
 }
 
-const columns = (now: Date): Column<FleetLine>[] => [
+const columnsAt = (now: Date): Column<FleetLine>[] => [
   {
     key: 'name',
     label: fleetTable.site,
@@ -97,10 +98,11 @@ interface Props {
 
 export function FleetTable({ lines, view, now, onChange, onClear }: Props) {
   const ascending = readsFromA(view.sort) ? view.order === 'down' : view.order === 'up';
+  const columns = useMemo(() => columnsAt(now), [now]);
   return (
     <Table
       caption={fleetTable.sitesWithTheirUnits}
-      columns={columns(now)}
+      columns={columns}
       rows={lines}
       rowKey={(line) => line.site.id}
       sorting={{ key: view.sort, descending: !ascending }}

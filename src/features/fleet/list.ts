@@ -6,6 +6,8 @@ export interface FleetLine {
   site: SiteNow;
   causes: readonly CauseNow[];
   need: Need;
+  /** How much is concerned. */
+  concerned: number;
 }
 
 const byName = new Intl.Collator('en', { numeric: true, sensitivity: 'base' });
@@ -18,8 +20,7 @@ function byFigure(a: number | null, b: number | null, order: FleetView['order'])
 
 const SORT: Record<FleetView['sort'], (a: FleetLine, b: FleetLine, order: FleetView['order']) => number> = {
   need: (a, b, order) => {
-    const gap =
-      urgency(a.need) - urgency(b.need) || concernedAt(b.site, b.causes) - concernedAt(a.site, a.causes);
+    const gap = urgency(a.need) - urgency(b.need) || b.concerned - a.concerned;
     return order === 'down' ? gap : -gap;
   },
   name: (a, b, order) => byName.compare(a.site.name, b.site.name) * (order === 'down' ? 1 : -1),
@@ -29,24 +30,41 @@ const SORT: Record<FleetView['sort'], (a: FleetLine, b: FleetLine, order: FleetV
   power: (a, b, order) => byFigure(a.site.power, b.site.power, order),
 };
 
+const NONE: readonly CauseNow[] = [];
+const bySite = new WeakMap<readonly CauseNow[], Map<string, CauseNow[]>>();
+function causesBySite(causes: readonly CauseNow[]): Map<string, CauseNow[]> {
+  const known = bySite.get(causes);
+  if (known) return known;
+  const made = new Map<string, CauseNow[]>();
+  for (const cause of causes) {
+    const list = made.get(cause.siteId);
+    if (list) list.push(cause);
+    else made.set(cause.siteId, [cause]);
+  }
+  bySite.set(causes, made);
+  return made;
+}
+
+const lines = new WeakMap<SiteNow, FleetLine>();
+/** The same object while nothing came for its site: its row is then not drawn again. */
+function lineOf(site: SiteNow, causes: readonly CauseNow[]): FleetLine {
+  const known = lines.get(site);
+  if (known?.causes === causes) return known;
+  const line = { site, causes, need: needOf(site, causes), concerned: concernedAt(site, causes) };
+  lines.set(site, line);
+  return line;
+}
+
 /** The lines of the fleet's table for a view: filtered, searched, sorted; names settle what is equal. */
 export function fleetLines(
   sites: readonly SiteNow[],
   causes: readonly CauseNow[],
   view: FleetView,
 ): FleetLine[] {
-  const ofSite = new Map<string, CauseNow[]>();
-  for (const cause of causes) {
-    const list = ofSite.get(cause.siteId);
-    if (list) list.push(cause);
-    else ofSite.set(cause.siteId, [cause]);
-  }
+  const ofSite = causesBySite(causes);
   const wanted = view.q.toLowerCase();
   return sites
-    .map((site): FleetLine => {
-      const own = ofSite.get(site.id) ?? [];
-      return { site, causes: own, need: needOf(site, own) };
-    })
+    .map((site) => lineOf(site, ofSite.get(site.id) ?? NONE))
     .filter(
       ({ site, need }) =>
         (view.stage === 'any' || site.stage === view.stage) &&

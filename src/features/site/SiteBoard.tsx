@@ -12,6 +12,7 @@ import { useLive } from '../../lib/live-hook';
 import { queryClient } from '../../lib/query-client';
 import { useViewInUrl } from '../../lib/view-in-url';
 import type { CaseItem } from '../../schemas/api/cases';
+import type { AcknowledgeReply } from '../../schemas/api/fleet';
 import type { SiteStanding } from '../../schemas/api/causes';
 import type { EventsPage, SitePage } from '../../schemas/api/site';
 import { paths } from '../../schemas/paths';
@@ -56,6 +57,11 @@ export function SiteBoard({ initial, events, kind: initialKind, cases, standing,
   const { data: page, error, refetch } = useQuery(siteQuery(initial), client);
   const start = useMemo(() => ({ kind: initialKind }), [initialKind]);
   const [{ kind }, setView] = useViewInUrl<{ kind: KindWanted }>(start, DEFAULTS);
+  const onTaken = useCallback(
+    (reply: AcknowledgeReply) =>
+      client.setQueryData<SitePage>(siteKey(id), (old) => withAcknowledgement(old ?? initial, reply)),
+    [client, id, initial],
+  );
   const onKind = useCallback((wanted: KindWanted) => setView({ kind: wanted }), [setView]);
   const status = useLive(`site:${id}`, (change, how) => {
     client.setQueryData<SitePage>(siteKey(id), (old) =>
@@ -147,9 +153,7 @@ export function SiteBoard({ initial, events, kind: initialKind, cases, standing,
                 now={now}
                 contact={page.contact}
                 taken={page.acknowledgements.find((a) => a.key === cause.key)}
-                onTaken={(reply) =>
-                  client.setQueryData<SitePage>(siteKey(id), (old) => withAcknowledgement(old ?? page, reply))
-                }
+                onTaken={onTaken}
               />
             ))}
           </div>
