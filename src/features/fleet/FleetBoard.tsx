@@ -10,6 +10,7 @@ import { ShowMore } from '../../components/ui/ShowMore';
 import { useNow } from '../../components/ui/Time';
 import { useReaderZone } from '../../components/ui/reader-zone';
 import { useLive } from '../../lib/live-hook';
+import { unpacking } from '../../lib/packed';
 import { queryClient } from '../../lib/query-client';
 import { useViewInUrl } from '../../lib/view-in-url';
 import type { AcknowledgeReply, FleetNow, FleetView, SinceLastLook as Missed } from '../../schemas/api/fleet';
@@ -34,7 +35,13 @@ interface Props {
 }
 
 /** The fleet: what is found, what to act on, every site by need. Server-rendered, then live. */
-export function FleetBoard({ initial, whole, view: initialView, missed, timeZone }: Props) {
+export const FleetBoard = unpacking(function FleetBoard({
+  initial,
+  whole,
+  view: initialView,
+  missed,
+  timeZone,
+}: Props) {
   const client = queryClient();
   const { data: fleet, error, refetch } = useQuery(fleetQuery(initial), client);
   const status = useLive('fleet', (change, kind) => {
@@ -159,4 +166,4 @@ export function FleetBoard({ initial, whole, view: initialView, missed, timeZone
       )}
     </>
   );
-}
+});

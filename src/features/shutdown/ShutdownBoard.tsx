@@ -14,6 +14,7 @@ import { useNow } from '../../components/ui/Time';
 import { useReaderZone } from '../../components/ui/reader-zone';
 import { withQuery } from '../../lib/api';
 import { useLive } from '../../lib/live-hook';
+import { unpacking } from '../../lib/packed';
 import { queryClient } from '../../lib/query-client';
 import { useViewInUrl } from '../../lib/view-in-url';
 import type { CauseNow } from '../../schemas/api/now';
@@ -52,7 +53,12 @@ interface Props {
   timeZone: string;
 }
 
-export function ShutdownBoard({ initial, whole: first, view: initialView, timeZone }: Props) {
+export const ShutdownBoard = unpacking(function ShutdownBoard({
+  initial,
+  whole: first,
+  view: initialView,
+  timeZone,
+}: Props) {
   const client = queryClient();
   const { data: now, error, refetch } = useQuery(shutdownQuery(initial), client);
   const status = useLive('fleet', (change, kind) => {
@@ -202,4 +208,4 @@ export function ShutdownBoard({ initial, whole: first, view: initialView, timeZo
       </Sheet>
     </>
   );
-}
+});

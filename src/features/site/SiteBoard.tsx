@@ -9,6 +9,7 @@ import { useNow } from '../../components/ui/Time';
 import { clocksDiffer, useReaderZone } from '../../components/ui/reader-zone';
 import { later } from '../../lib/later';
 import { useLive } from '../../lib/live-hook';
+import { unpacking } from '../../lib/packed';
 import { queryClient } from '../../lib/query-client';
 import { useViewInUrl } from '../../lib/view-in-url';
 import type { CaseItem } from '../../schemas/api/cases';
@@ -51,7 +52,14 @@ interface Props {
 }
 const DEFAULTS: { kind: KindWanted } = { kind: 'all' };
 
-export function SiteBoard({ initial, events, kind: initialKind, cases, standing, mayImport }: Props) {
+export const SiteBoard = unpacking(function SiteBoard({
+  initial,
+  events,
+  kind: initialKind,
+  cases,
+  standing,
+  mayImport,
+}: Props) {
   const client = queryClient();
   const { id, timeZone } = initial.site;
   const { data: page, error, refetch } = useQuery(siteQuery(initial), client);
@@ -177,4 +185,4 @@ export function SiteBoard({ initial, events, kind: initialKind, cases, standing,
       </div>
     </>
   );
-}
+});

@@ -13,6 +13,7 @@ import { withQuery } from '../../lib/api';
 import { late } from '../../lib/late';
 import { later } from '../../lib/later';
 import { useLive } from '../../lib/live-hook';
+import { unpacking } from '../../lib/packed';
 import { tells } from '../../lib/patch';
 import { queryClient } from '../../lib/query-client';
 import { useViewInUrl } from '../../lib/view-in-url';
@@ -282,10 +283,8 @@ function Page({ page: initial, history, view: initialView }: Props) {
 }
 
 /** The page of one string, rendered on the server and then kept live. */
-export function StringView(props: Props) {
-  return (
-    <QueryClientProvider client={queryClient()}>
-      <Page {...props} />
-    </QueryClientProvider>
-  );
-}
+export const StringView = unpacking((props: Props) => (
+  <QueryClientProvider client={queryClient()}>
+    <Page {...props} />
+  </QueryClientProvider>
+));

@@ -95,6 +95,7 @@ export function database(purpose: Purpose): Knex {
 export function signInPool(): pg.Pool {
   if (!pools.signIn) {
     pools.signIn = new pg.Pool({ ...connectionOf('sign_in'), max: SIZES.sign_in });
+    pools.signIn.on('connect', (client) => prepareRepeated(client as Querying));
     pools.signIn.on('error', (error) =>
       log.warn({ error: error.message }, 'an idle sign-in connection was lost'),
     );

@@ -39,4 +39,37 @@ describe('statements that come again', () => {
     for (let i = 0; i < 5; i++) connection.query(new Cursor(), () => undefined);
     expect(seen.every((s) => s instanceof Cursor)).toBe(true);
   });
+
+  it('are prepared also where a pool hands over a text with its values', () => {
+    const seen: unknown[][] = [];
+    const connection: Querying = { query: (...asked: unknown[]) => seen.push(asked) };
+    prepareRepeated(connection);
+    const answer = () => undefined;
+    for (let i = 0; i < 4; i++) connection.query(long(1), [i], answer);
+    expect(seen.slice(0, 3)).toEqual([0, 1, 2].map((i) => [long(1), [i], answer]));
+    expect(seen[3]?.[0]).toEqual({ text: long(1), values: [3], name: 'w1' });
+  });
+
+  it('are asked again by themselves where the plan is outdated; where that fails too, the first error counts', () => {
+    const outdated = Object.assign(new Error('cached plan must not change result type'), { code: '0A000' });
+    const aborted = Object.assign(new Error('current transaction is aborted'), { code: '25P02' });
+    const answered = (again: Error | null): unknown => {
+      let unnamed = 0;
+      const connection: Querying = {
+        query: (...asked: unknown[]) => {
+          const [statement, answer] = asked as [{ name?: string }, (e: Error | null, rows?: string) => void];
+          if (statement.name) answer(outdated);
+          else answer(++unnamed > 3 ? again : null, 'rows');
+        },
+      };
+      prepareRepeated(connection);
+      let got: unknown;
+      for (let i = 0; i < 4; i++)
+        connection.query({ text: long(1), values: [] }, (error, rows) => (got = error ?? rows));
+      expect(unnamed).toBe(4);
+      return got;
+    };
+    expect(answered(null)).toBe('rows');
+    expect(answered(aborted)).toBe(outdated);
+  });
 });

@@ -4,8 +4,8 @@
  * where that is the cheaper way (`plan_cache_mode` auto).
  */
 
-/** Shorter ones are planned in no time. */
-const AT_LEAST_CHARACTERS = 150;
+/** Shorter ones begin and end transactions. */
+const AT_LEAST_CHARACTERS = 30;
 /** How often a statement must have come before; one that is made of what somebody typed seldom comes again. */
 const AFTER_TIMES = 3;
 /** Each takes memory of the server, some ten kB. */
@@ -38,10 +38,11 @@ export class Prepared {
     return name;
   }
 
-  /** After an error: a statement that it makes useless gets another name. */
-  failed(text: string, error: unknown): void {
-    if (error instanceof Error && 'code' in error && OUTDATED.has(String(error.code)))
-      this.names.delete(text);
+  /** After an error: a statement that it makes useless gets another name. True: it does. */
+  failed(text: string, error: unknown): boolean {
+    const outdated = error instanceof Error && 'code' in error && OUTDATED.has(String(error.code));
+    if (outdated) this.names.delete(text);
+    return outdated;
   }
 }
 
@@ -51,25 +52,40 @@ interface Statement {
   values?: readonly unknown[];
   name?: string;
 }
-/** As much of a connection as knex uses. */
+/** As much of a connection as knex and a pool use. */
 export interface Querying {
   query(statement: Statement, answer: Answer): unknown;
+  query(text: string, values: readonly unknown[], answer: Answer): unknown;
+}
+
+/** What is asked, where it is a plain statement with an answer to come: no cursor, no text without values. */
+function plain(asked: readonly unknown[]): [Statement, Answer] | undefined {
+  const [first, second, third] = asked;
+  if (typeof first === 'string')
+    return Array.isArray(second) && typeof third === 'function'
+      ? [{ text: first, values: second }, third as Answer]
+      : undefined;
+  return typeof second === 'function' && Object.getPrototypeOf(first) === Object.prototype
+    ? [first as Statement, second as Answer]
+    : undefined;
 }
 
 /** From here on, what comes again on this connection is prepared on it. */
 export function prepareRepeated(connection: Querying): void {
   const prepared = new Prepared();
-  const query = connection.query.bind(connection);
-  connection.query = (statement, answer) => {
-    // knex hands over plain statements, cursors and texts without values
-    const name =
-      typeof answer === 'function' && Object.getPrototypeOf(statement) === Object.prototype
-        ? prepared.nameOf(statement.text)
-        : undefined;
-    if (name === undefined) return query(statement, answer);
-    return query({ ...statement, name }, (error, result) => {
-      if (error) prepared.failed(statement.text, error);
-      answer(error, result);
+  const query = connection.query.bind(connection) as (...asked: unknown[]) => unknown;
+  connection.query = (...asked: unknown[]) => {
+    const known = plain(asked);
+    const name = known && prepared.nameOf(known[0].text);
+    if (!known || name === undefined) return query(...asked);
+    const [statement, answer] = known;
+    return query({ ...statement, name }, (error: Error | null, result?: unknown) => {
+      // outside a transaction it can be asked again at once; within one this fails too, and the first word counts
+      if (error && prepared.failed(statement.text, error))
+        query(statement, (again: Error | null, found?: unknown) =>
+          again ? answer(error) : answer(null, found),
+        );
+      else answer(error, result);
     });
   };
 }

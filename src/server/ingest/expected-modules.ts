@@ -17,9 +17,8 @@ export async function expectedModules(judge: SiteJudge): Promise<Map<number, Exp
   const expected = new Map<number, ExpectedModule>();
   if (silent.length === 0) return expected;
   const byName = new Map(silent.map((j) => [j.string.name, j]));
-  const now = await asIngest((tx) =>
-    stringsNow(tx, new Date(), { stringIds: silent.map((j) => j.string.id) }),
-  );
+  const which = { siteId: judge.site.id, stringIds: silent.map((j) => j.string.id) };
+  const now = await asIngest((tx) => stringsNow(tx, new Date(), which));
   for (const string of now) {
     const judged = byName.get(string.name);
     const units = judged?.context.slots.filter(Boolean).length ?? 0;

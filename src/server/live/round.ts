@@ -94,7 +94,7 @@ async function changedStrings(
   const found = new Map<number, Change['strings']>();
   for (const siteId of new Set(strings.values())) {
     const stringIds = [...strings].flatMap(([id, of]) => (of === siteId ? [id] : []));
-    found.set(siteId, await stringsNow(tx, at, { stringIds }));
+    found.set(siteId, await stringsNow(tx, at, { siteId, stringIds }));
   }
   return found;
 }

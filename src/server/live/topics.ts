@@ -90,7 +90,7 @@ async function stateOf(tx: Tx, subject: Subject, at: Date): Promise<Change> {
   const { siteId } = subject;
   if (subject.kind === 'string')
     return {
-      strings: await stringsNow(tx, at, { stringIds: [subject.stringId] }),
+      strings: await stringsNow(tx, at, { siteId, stringIds: [subject.stringId] }),
       inverters: await invertersNow(tx, at, siteId),
     };
   const strings = await stringsNow(tx, at, { siteId });

@@ -11,13 +11,13 @@ import { nowRows, sitesOfStrings } from './now-rows';
  */
 const byName = new Intl.Collator('en', { numeric: true });
 
-/** Strings of a site, or chosen strings; in the order of their names ("A2" before "A10"). One round trip a site. */
+/** Strings of a site, or chosen ones, of one site where it is known; in the order of their names ("A2" before "A10"). */
 export async function stringsNow(
   tx: Tx,
   at: Date,
-  which: { siteId: number } | { stringIds: readonly number[] },
+  which: { siteId: number; stringIds?: readonly number[] } | { stringIds: readonly number[] },
 ): Promise<StringNow[]> {
-  const wanted = 'stringIds' in which ? new Set(which.stringIds) : undefined;
+  const wanted = which.stringIds && new Set(which.stringIds);
   const siteIds = 'siteId' in which ? [which.siteId] : await sitesOfStrings(tx, which.stringIds);
   const strings: StringNow[] = [];
   for (const siteId of siteIds) {

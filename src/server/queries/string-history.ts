@@ -20,8 +20,8 @@ export type Quantity = 'voltage' | 'current' | 'power';
 
 /** One report's figure: units of a string carry one current, so the middle one stands for it. */
 const OF_FRAME: Record<Quantity, string> = {
-  voltage: 'voltage_sum / 100.0',
-  power: 'power_sum / 10.0',
+  voltage: 'voltage_sum / 100.0::float8',
+  power: 'power_sum / 10.0::float8',
   current: '(select percentile_cont(0.5) within group (order by c) from unnest(current) c) / 1000.0',
 };
 const FRAME_COLUMNS: Record<Quantity, readonly FrameColumn[]> = {
@@ -30,8 +30,16 @@ const FRAME_COLUMNS: Record<Quantity, readonly FrameColumn[]> = {
   current: ['voltage_sum', 'power_sum', 'current'],
 };
 const OF_QUARTER: Record<Quantity, { value: string; low: string; high: string }> = {
-  voltage: { value: 'voltage_avg / 100.0', low: 'voltage_min / 100.0', high: 'voltage_max / 100.0' },
-  power: { value: 'energy / 150.0', low: 'energy / 150.0', high: 'energy / 150.0' },
+  voltage: {
+    value: 'voltage_avg / 100.0::float8',
+    low: 'voltage_min / 100.0::float8',
+    high: 'voltage_max / 100.0::float8',
+  },
+  power: {
+    value: 'energy / 150.0::float8',
+    low: 'energy / 150.0::float8',
+    high: 'energy / 150.0::float8',
+  },
   current: {
     value: '(select percentile_cont(0.5) within group (order by c) from unnest(unit_current) c) / 1000.0',
     low: 'null::float8',
@@ -102,8 +110,8 @@ export async function stringDays(
 }
 
 const OF_INPUT: Record<Quantity, string> = {
-  voltage: 'voltage / 10.0',
-  current: 'current / 100.0',
+  voltage: 'voltage / 10.0::float8',
+  current: 'current / 100.0::float8',
   power: 'voltage::float8 * current / 1000.0',
 };
 
@@ -167,7 +175,7 @@ const sourceOf = ({ resolution, quantity }: SiblingOptions): string =>
     quarter: `select string_id, at as step, voltage_avg as voltage, ${OF_QUARTER[quantity].value} as v
               from string_quarter where string_id = any (:ids) and at >= :from and at < :to`,
     day: `select string_id, (day + time '12:00') at time zone :timeZone as step, voltage_avg as voltage,
-                 ${quantity === 'voltage' ? 'voltage_avg / 100.0' : 'energy / 1000.0'} as v
+                 ${quantity === 'voltage' ? 'voltage_avg / 100.0::float8' : 'energy / 1000.0::float8'} as v
           from string_day where string_id = any (:ids) and day >= (:from::timestamptz at time zone :timeZone)::date
             and day <= (:to::timestamptz at time zone :timeZone)::date`,
   })[resolution];
@@ -178,7 +186,7 @@ const eachOf = (options: SiblingOptions): string => `
   each as (
     select step, t.string_id, avg(t.v)::float8 ${options.quantity === 'current' ? '' : '/ u.units'} as v
     from told t join unnest(:ids::int4[], :units::int4[]) as u(id, units) on u.id = t.string_id
-    group by step, t.string_id, u.units having avg(t.voltage) / 100.0 / u.units >= :passingFrom)`;
+    group by step, t.string_id, u.units having avg(t.voltage)::float8 / 100 / u.units >= :passingFrom)`;
 
 export interface SiblingStep {
   at: number;

@@ -59,7 +59,7 @@ export const readString = async (tx: Tx, ref: string, at: Date): Promise<StringP
 /** The same of a string that was found. @throws AppError not_found: it is gone since */
 export async function readKnownString(tx: Tx, known: KnownString, at: Date): Promise<StringPage> {
   const { facts, siblings } = known;
-  const [string] = await stringsNow(tx, at, { stringIds: [facts.id] });
+  const [string] = await stringsNow(tx, at, { siteId: facts.siteId, stringIds: [facts.id] });
   if (!string) throw noSuchString();
   const names = await stringNames(tx, facts.siteId);
   const nth = names.findIndex((n) => n.id === facts.ref);
