@@ -5,6 +5,10 @@ import type { Change } from '../schemas/live';
 export const tells = (change: Change, which: (event: EventItem) => boolean): boolean =>
   change.leftOut === true || (change.events ?? []).some(which);
 
+/** Whether a change tells of causes. */
+export const tellsOfCauses = ({ causes, causesAt }: Change): boolean =>
+  causes !== undefined || causesAt !== undefined;
+
 /**
  * A list with what has come in: entries of the same key replaced in place, new ones added at the end. The list
  * itself comes back when nothing came, so that nothing is drawn again.

@@ -1,5 +1,6 @@
 import { z } from 'zod';
-import { causeNow, eventItem, gatewayNow, inverterNow, siteNow, stringNow } from './api/now';
+import { causesAt, causeSent } from './api/cause-sent';
+import { eventItem, gatewayNow, inverterNow, siteNow, stringNow } from './api/now';
 
 /**
  * /live, browser side. One socket carries several topics: `fleet`, `notices` (one's own), `site:ID`, `string:ID`,
@@ -46,7 +47,8 @@ export type NoticesNow = z.infer<typeof noticesNow>;
 /** What changed; a part that is absent did not. Arrays replace by `id` (or name, number, key), they are not whole lists. */
 export const change = z.object({
   sites: z.array(siteNow).optional(), // fleet
-  causes: z.array(causeNow).optional(), // fleet, site: the whole list, when it changed
+  causes: z.array(causeSent).optional(), // fleet, site: the whole list
+  causesAt: z.array(causesAt).optional(), // fleet: of the sites where they changed
   site: siteNow.optional(), // site
   strings: z.array(stringNow).optional(), // site, string, roll-call
   inverters: z.array(inverterNow).optional(), // site, string

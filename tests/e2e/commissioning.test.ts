@@ -1,6 +1,8 @@
 import type { Browser, BrowserContext, Page } from 'playwright-core';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import type { Role } from '../../src/domain/access/permissions';
+import { received, type Sent } from '../../src/schemas/api/cause-sent';
+import type { ShutdownNow } from '../../src/schemas/api/shutdown';
 import type { Simulator } from '../../simulator/engine';
 import { signedInContext, signInOn, startBrowser } from '../support/browser';
 import { testDatabase, type TestDatabase } from '../support/database';
@@ -166,13 +168,7 @@ describe('the first day of a site', () => {
   it('and the analyst’s page lists exactly those', async () => {
     const analyst = await signedIn('analyst');
     const reply = await analyst.request.get(`${site.url}/api/shutdown`);
-    const { causes } = (await reply.json()) as {
-      causes: {
-        verdict: string;
-        siteName: string;
-        units: { stringName: string; position: number | null }[];
-      }[];
-    };
+    const { causes } = received((await reply.json()) as Sent<ShutdownNow>);
     const stuck = causes.filter((c) => c.verdict === 'stuck' && c.siteName === HALL).flatMap((c) => c.units);
     expect(stuck.map((u) => `${u.stringName}-${u.position}`).sort()).toEqual(
       STUCK.map((p) => `B3-${p}`).sort(),

@@ -5,6 +5,7 @@ import { fleetLines } from '../../src/features/fleet/list';
 import { GET as fleetRoute } from '../../src/pages/api/fleet';
 import { GET as csvRoute } from '../../src/pages/api/fleet.csv';
 import { POST as acknowledgeRoute } from '../../src/pages/api/sites/[site]/acknowledge';
+import { received, type Sent } from '../../src/schemas/api/cause-sent';
 import { acknowledgeReply, fleetNow, type FleetNow } from '../../src/schemas/api/fleet';
 import { database } from '../../src/server/db/pools';
 import { asActor, asIngest } from '../../src/server/db/transaction';
@@ -69,7 +70,7 @@ const takeOn = (actor: Actor, site: string, key: unknown, name = 'Sunniva Quill'
 describe('the fleet', () => {
   it('answers in the agreed shape with the figures that judgement wrote', async () => {
     const response = await ask(fleetRoute, { actor: analyst });
-    const body = fleetNow.parse(await response.json());
+    const body = fleetNow.parse(received((await response.json()) as Sent<FleetNow>));
     const kestrel = body.sites.find((s) => s.name === KESTREL);
     expect(kestrel?.counts).toMatchObject({
       units: 312,

@@ -3,6 +3,7 @@ import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { WebSocket } from 'ws';
 import { loggerToken } from '../../simulator/scenarios/tokens';
 import type { SeededSite } from '../../seeds/plant/seeded';
+import { UNIT_STATES, VERDICTS } from '../../src/domain/verdicts/codes';
 import { liveMessage, type LiveMessage } from '../../src/schemas/live';
 import { paths } from '../../src/schemas/paths';
 import { endSession, openSession } from '../../src/server/auth/sessions';
@@ -94,10 +95,10 @@ const notesIn = (inbox: Inbox<LiveMessage>): unknown[] =>
       ? []
       : (m.change.events ?? []).map((e) => e.detail.note).filter((n) => n !== undefined),
   );
-const wake = () =>
+const wake = (at = site) =>
   db.owner.query(
     `select pg_notify('changed', json_build_object('sites', json_build_array($1::int4))::text)`,
-    [site.id],
+    [at.id],
   );
 
 describe('who may listen', () => {
@@ -190,6 +191,39 @@ describe('what they hear', () => {
       'site',
       'strings',
     ]);
+  });
+
+  it('of a fleet the causes of those sites where they changed, and nothing twice', async () => {
+    const inbox = await browse(ANALYST);
+    subscribe(inbox, 'fleet');
+    const { change } = await inbox.next('snapshot');
+    const clinic = fleet.site('Weirside Clinic');
+    const [string] = [...clinic.strings.values()];
+    const before = (change.causes ?? []).filter((c) => c.siteId === clinic.ref);
+    const judge = (state: string, verdict: string) =>
+      db.owner.query(
+        `insert into string_judgement as j (string_id, site_id, judged_at, state, verdict, since, stuck)
+         select $1, $2, now(), array[$3::int2], array[$4::int2], array[extract(epoch from now())::int4], $5
+         on conflict (string_id) do update set state[1] = $3::int2, verdict[1] = $4::int2, stuck = excluded.stuck`,
+        [
+          string?.id,
+          clinic.id,
+          UNIT_STATES.indexOf(state as 'passing'),
+          VERDICTS.indexOf(verdict as 'ok'),
+          verdict === 'stuck' ? 1 : 0,
+        ],
+      );
+    await judge('shutdown', 'stuck');
+    await wake(clinic);
+    const told = await inbox.next('delta', (m) => m.change.causesAt !== undefined);
+    expect(told.change.causes).toBeUndefined();
+    expect(told.change.causesAt?.map((at) => at.site)).toEqual([clinic.ref]);
+    expect(told.change.causesAt?.[0]?.causes.map((c) => c.verdict)).toContain('stuck');
+    await wake(clinic); // nothing is new
+    await judge('passing', 'ok');
+    await wake(clinic);
+    const over = await inbox.next('delta', (m) => m.change.causesAt !== undefined);
+    expect(over.change.causesAt).toEqual([{ site: clinic.ref, causes: before }]);
   });
 
   it("a unit's change, soon after its frame", async () => {

@@ -4,7 +4,8 @@ import { shutdownFinding } from '../../src/features/shutdown/finding';
 import { heldSites, shutdownGroups } from '../../src/features/shutdown/groups';
 import { GET as shutdownRoute } from '../../src/pages/api/shutdown';
 import { GET as csvRoute } from '../../src/pages/api/shutdown.csv';
-import { shutdownNow } from '../../src/schemas/api/shutdown';
+import { received, type Sent } from '../../src/schemas/api/cause-sent';
+import { shutdownNow, type ShutdownNow } from '../../src/schemas/api/shutdown';
 import { testDatabase, type TestDatabase } from '../support/database';
 import { ask } from '../support/endpoint';
 import { testFleet, type TestFleet } from '../support/fleet';
@@ -86,7 +87,8 @@ beforeAll(async () => {
 });
 afterAll(() => db.drop());
 
-const read = async (actor: Actor) => shutdownNow.parse(await (await ask(shutdownRoute, { actor })).json());
+const read = async (actor: Actor) =>
+  shutdownNow.parse(received((await (await ask(shutdownRoute, { actor })).json()) as Sent<ShutdownNow>));
 
 describe('the Shutdown page', () => {
   it('lists exactly the two stuck units with string, position and serial, oldest cause first', async () => {

@@ -3,7 +3,8 @@ import type { Actor } from '../../src/domain/access/permissions';
 import { GET as siteRoute } from '../../src/pages/api/sites/[site]/index';
 import { GET as eventsRoute } from '../../src/pages/api/sites/[site]/events';
 import { GET as eventsCsvRoute } from '../../src/pages/api/sites/[site]/events.csv';
-import { eventsPage, sitePage } from '../../src/schemas/api/site';
+import { received, type Sent } from '../../src/schemas/api/cause-sent';
+import { eventsPage, sitePage, type SitePage } from '../../src/schemas/api/site';
 import { database } from '../../src/server/db/pools';
 import { asActor } from '../../src/server/db/transaction';
 import { readSite } from '../../src/server/services/site-page';
@@ -47,7 +48,9 @@ const ref = (name: string) => fleet.site(name).ref;
 
 describe("a site's page", () => {
   it('has zones with what is in force, since when and by whom; the newest command wins', async () => {
-    const page = sitePage.parse(await (await get(analyst, ref(KESTREL))).json());
+    const page = sitePage.parse(
+      received((await (await get(analyst, ref(KESTREL))).json()) as Sent<SitePage>),
+    );
     expect(
       page.zones.map((z) => [z.name, z.command?.inForce ?? null, z.command?.by ?? null, z.strings.length]),
     ).toEqual([
@@ -59,7 +62,9 @@ describe("a site's page", () => {
   });
 
   it('has every string with its units, the gateways and loggers, whom to call, and the cause', async () => {
-    const page = sitePage.parse(await (await get(analyst, ref(KESTREL))).json());
+    const page = sitePage.parse(
+      received((await (await get(analyst, ref(KESTREL))).json()) as Sent<SitePage>),
+    );
     expect(page.strings).toHaveLength(26);
     const c2 = page.strings.find((s) => s.name === 'C2');
     expect(c2?.counts).toMatchObject({ units: 12, passing: 1, shutdown: 11, notShuttingDown: 1 });

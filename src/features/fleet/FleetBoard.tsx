@@ -11,8 +11,11 @@ import { useNow } from '../../components/ui/Time';
 import { useReaderZone } from '../../components/ui/reader-zone';
 import { useLive } from '../../lib/live-hook';
 import { unpacking } from '../../lib/packed';
+import { tellsOfCauses } from '../../lib/patch';
 import { queryClient } from '../../lib/query-client';
+import { useReadAgain } from '../../lib/read-again';
 import { useViewInUrl } from '../../lib/view-in-url';
+import { received, type Sent } from '../../schemas/api/cause-sent';
 import type { AcknowledgeReply, FleetNow, FleetView, SinceLastLook as Missed } from '../../schemas/api/fleet';
 import { FleetFilters } from './FleetFilters';
 import { FleetTable } from './FleetTable';
@@ -25,7 +28,7 @@ import { FLEET_DEFAULTS, sortInWords } from './view';
 import { fleetBoard } from '../../words/fleet';
 
 interface Props {
-  initial: FleetNow;
+  initial: Sent<FleetNow>;
   /** Of a large fleet, of which `initial` is the first page; null: it is all. */
   whole: Whole | null;
   view: FleetView;
@@ -36,20 +39,22 @@ interface Props {
 
 /** The fleet: what is found, what to act on, every site by need. Server-rendered, then live. */
 export const FleetBoard = unpacking(function FleetBoard({
-  initial,
+  initial: came,
   whole,
   view: initialView,
   missed,
   timeZone,
 }: Props) {
   const client = queryClient();
+  const initial = useMemo(() => received(came), [came]);
   const { data: fleet, error, refetch } = useQuery(fleetQuery(initial), client);
+  const readAgain = useReadAgain(fleetKey);
   const status = useLive('fleet', (change, kind) => {
     client.setQueryData<FleetNow>(fleetKey, (old) =>
       changedFleet(old ?? initial, change, new Date().toISOString()),
     );
     // a cause at a site whose telephone number or acknowledgement is not here yet
-    if (kind === 'delta' && change.causes) void client.invalidateQueries({ queryKey: fleetKey });
+    if (kind === 'delta' && tellsOfCauses(change)) readAgain();
   });
   const [view, changeView] = useViewInUrl(initialView, FLEET_DEFAULTS);
   const [most, setMost] = useState(LINES_AT_ONCE);

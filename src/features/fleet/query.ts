@@ -1,6 +1,7 @@
 import { queryOptions } from '@tanstack/react-query';
 import { api } from '../../lib/api';
 import { replaced } from '../../lib/patch';
+import { causesAfter, received, type Sent } from '../../schemas/api/cause-sent';
 import type { AcknowledgeReply, FleetNow } from '../../schemas/api/fleet';
 import type { Change } from '../../schemas/live';
 import { paths } from '../../schemas/paths';
@@ -11,7 +12,7 @@ export const fleetKey = ['fleet'] as const;
 export const fleetQuery = (initial: FleetNow) =>
   queryOptions({
     queryKey: fleetKey,
-    queryFn: ({ signal }) => api<FleetNow>(paths.api.fleet(), { signal }),
+    queryFn: ({ signal }) => api<Sent<FleetNow>>(paths.api.fleet(), { signal }).then(received),
     initialData: initial,
     refetchInterval: 60_000,
   });
@@ -22,7 +23,7 @@ export function changedFleet(fleet: FleetNow, change: Change, at: string): Fleet
     ...fleet,
     at,
     sites: replaced(fleet.sites, change.sites, (s) => s.id),
-    causes: change.causes ?? fleet.causes,
+    causes: causesAfter(fleet.causes, change),
   };
 }
 

@@ -15,8 +15,11 @@ import { useReaderZone } from '../../components/ui/reader-zone';
 import { withQuery } from '../../lib/api';
 import { useLive } from '../../lib/live-hook';
 import { unpacking } from '../../lib/packed';
+import { tellsOfCauses } from '../../lib/patch';
 import { queryClient } from '../../lib/query-client';
+import { useReadAgain } from '../../lib/read-again';
 import { useViewInUrl } from '../../lib/view-in-url';
+import { received, type Sent } from '../../schemas/api/cause-sent';
 import type { CauseNow } from '../../schemas/api/now';
 import type { ShutdownNow, ShutdownView } from '../../schemas/api/shutdown';
 import { paths } from '../../schemas/paths';
@@ -46,7 +49,7 @@ const TITLE: Record<CauseNow['verdict'], string> = {
 };
 
 interface Props {
-  initial: ShutdownNow;
+  initial: Sent<ShutdownNow>;
   /** Of a large fleet, of which `initial` is the first page; null: it is all. */
   whole: Whole | null;
   view: ShutdownView;
@@ -54,18 +57,20 @@ interface Props {
 }
 
 export const ShutdownBoard = unpacking(function ShutdownBoard({
-  initial,
+  initial: came,
   whole: first,
   view: initialView,
   timeZone,
 }: Props) {
   const client = queryClient();
+  const initial = useMemo(() => received(came), [came]);
   const { data: now, error, refetch } = useQuery(shutdownQuery(initial), client);
+  const readAgain = useReadAgain(shutdownKey);
   const status = useLive('fleet', (change, kind) => {
     client.setQueryData<ShutdownNow>(shutdownKey, (old) =>
       changedShutdown(old ?? initial, change, new Date().toISOString()),
     );
-    if (kind === 'delta' && change.causes) void client.invalidateQueries({ queryKey: shutdownKey });
+    if (kind === 'delta' && tellsOfCauses(change)) readAgain();
   });
   const [view, changeView] = useViewInUrl(initialView, SHUTDOWN_DEFAULTS);
   const partly = first !== null && now.causes.length <= initial.causes.length ? first : null;

@@ -1,6 +1,7 @@
 import { queryOptions } from '@tanstack/react-query';
 import { api } from '../../lib/api';
 import { replaced } from '../../lib/patch';
+import { causesAfter, received, type Sent } from '../../schemas/api/cause-sent';
 import type { AcknowledgeReply } from '../../schemas/api/fleet';
 import type { ShutdownNow } from '../../schemas/api/shutdown';
 import type { Change } from '../../schemas/live';
@@ -11,14 +12,14 @@ export const shutdownKey = ['shutdown'] as const;
 export const shutdownQuery = (initial: ShutdownNow) =>
   queryOptions({
     queryKey: shutdownKey,
-    queryFn: ({ signal }) => api<ShutdownNow>(paths.api.shutdown(), { signal }),
+    queryFn: ({ signal }) => api<Sent<ShutdownNow>>(paths.api.shutdown(), { signal }).then(received),
     initialData: initial,
     refetchInterval: 60_000,
   });
 
 /** After a change of the fleet: sites that have neither a cause nor a command any more leave the page. */
 export function changedShutdown(now: ShutdownNow, change: Change, at: string): ShutdownNow {
-  const causes = change.causes ?? now.causes;
+  const causes = causesAfter(now.causes, change);
   const concerned = new Set(causes.map((c) => c.siteId));
   return {
     ...now,

@@ -12,6 +12,7 @@ import { useLive } from '../../lib/live-hook';
 import { unpacking } from '../../lib/packed';
 import { queryClient } from '../../lib/query-client';
 import { useViewInUrl } from '../../lib/view-in-url';
+import { received, type Sent } from '../../schemas/api/cause-sent';
 import type { CaseItem } from '../../schemas/api/cases';
 import type { AcknowledgeReply } from '../../schemas/api/fleet';
 import type { SiteStanding } from '../../schemas/api/causes';
@@ -41,7 +42,7 @@ const Further = later(
 );
 
 interface Props {
-  initial: SitePage;
+  initial: Sent<SitePage>;
   events: EventsPage;
   kind: KindWanted;
   /** Cases here that are not closed. */
@@ -53,7 +54,7 @@ interface Props {
 const DEFAULTS: { kind: KindWanted } = { kind: 'all' };
 
 export const SiteBoard = unpacking(function SiteBoard({
-  initial,
+  initial: came,
   events,
   kind: initialKind,
   cases,
@@ -61,6 +62,7 @@ export const SiteBoard = unpacking(function SiteBoard({
   mayImport,
 }: Props) {
   const client = queryClient();
+  const initial = useMemo(() => received(came), [came]);
   const { id, timeZone } = initial.site;
   const { data: page, error, refetch } = useQuery(siteQuery(initial), client);
   const start = useMemo(() => ({ kind: initialKind }), [initialKind]);

@@ -1,7 +1,8 @@
 import { infiniteQueryOptions, queryOptions, type InfiniteData } from '@tanstack/react-query';
 import type { EventKind } from '../../domain/verdicts/codes';
 import { api } from '../../lib/api';
-import { replaced, tells } from '../../lib/patch';
+import { replaced, tells, tellsOfCauses } from '../../lib/patch';
+import { causesAfter, received, type Sent } from '../../schemas/api/cause-sent';
 import type { AcknowledgeReply } from '../../schemas/api/fleet';
 import type { EventItem } from '../../schemas/api/now';
 import type { EventsPage, SitePage } from '../../schemas/api/site';
@@ -13,7 +14,7 @@ export const siteKey = (site: string) => ['site', site] as const;
 export const siteQuery = (initial: SitePage) =>
   queryOptions({
     queryKey: siteKey(initial.site.id),
-    queryFn: ({ signal }) => api<SitePage>(paths.api.site(initial.site.id), { signal }),
+    queryFn: ({ signal }) => api<Sent<SitePage>>(paths.api.site(initial.site.id), { signal }).then(received),
     initialData: initial,
     refetchInterval: 120_000,
   });
@@ -24,7 +25,7 @@ export function changedSite(page: SitePage, change: Change, at: string): SitePag
     ...page,
     at,
     site: change.site ?? page.site,
-    causes: change.causes ?? page.causes,
+    causes: causesAfter(page.causes, change),
     strings: replaced(page.strings, change.strings, (s) => s.id),
     inverters: replaced(page.inverters, change.inverters, (i) => i.name),
     gateways: replaced(page.gateways, change.gateways, (g) => `${g.number} ${g.name}`),
@@ -33,7 +34,7 @@ export function changedSite(page: SitePage, change: Change, at: string): SitePag
 
 /** What a change says that only the whole page tells: who commanded, who took a hazard on, loggers, roll call. */
 export const asksForReading = (change: Change): boolean =>
-  change.causes !== undefined ||
+  tellsOfCauses(change) ||
   tells(change, (e) =>
     [
       'command',

@@ -1,4 +1,7 @@
+import { sent } from '../../schemas/api/cause-sent';
 import { endpoint } from '../../server/http/endpoint';
 import { readFleet } from '../../server/services/fleet';
 
-export const GET = endpoint({ permission: 'fleet.read' }, ({ tx }) => readFleet(tx, new Date()));
+export const GET = endpoint({ permission: 'fleet.read' }, async ({ tx }) =>
+  sent(await readFleet(tx, new Date())),
+);

@@ -1,4 +1,7 @@
+import { sent } from '../../schemas/api/cause-sent';
 import { endpoint } from '../../server/http/endpoint';
 import { readShutdown } from '../../server/services/fleet';
 
-export const GET = endpoint({ permission: 'shutdown.read' }, ({ tx }) => readShutdown(tx, new Date()));
+export const GET = endpoint({ permission: 'shutdown.read' }, async ({ tx }) =>
+  sent(await readShutdown(tx, new Date())),
+);

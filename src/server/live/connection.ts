@@ -1,6 +1,13 @@
 import type { WebSocket } from 'ws';
 import type { Actor } from '../../domain/access/permissions';
-import { CLOSE_COME_BACK, clientMessage, type ClientMessage, type LiveMessage } from '../../schemas/live';
+import type { CauseSent } from '../../schemas/api/cause-sent';
+import {
+  CLOSE_COME_BACK,
+  clientMessage,
+  type Change,
+  type ClientMessage,
+  type LiveMessage,
+} from '../../schemas/live';
 import { isDatabaseAway } from '../errors';
 import { log } from '../log';
 import { meters } from '../observe/meters';
@@ -13,13 +20,30 @@ const WAITING_MAX_BYTES = 4 * 1024 * 1024;
 const TOPICS_MAX = 20;
 
 export class Subscription implements Listening {
-  causes = '';
+  causes: string;
+  readonly causesAt = new Map<string, string>();
   constructor(
     readonly connection: Connection,
     readonly topic: string,
     readonly subject: Subject,
     public cursor: string,
-  ) {}
+    /** What it begins with. */
+    { causes = [] }: Change,
+  ) {
+    this.causes = JSON.stringify(causes);
+    if (subject.kind === 'fleet')
+      for (const [site, list] of bySite(causes)) this.causesAt.set(site, JSON.stringify(list));
+  }
+}
+
+function bySite(causes: readonly CauseSent[]): Map<string, CauseSent[]> {
+  const sites = new Map<string, CauseSent[]>();
+  for (const cause of causes) {
+    const list = sites.get(cause.siteId);
+    if (list) list.push(cause);
+    else sites.set(cause.siteId, [cause]);
+  }
+  return sites;
 }
 
 /** One browser's socket and what it listens to. */
@@ -105,7 +129,7 @@ export class Connection {
         message.cursor !== undefined && /^\d{1,19}$/.test(message.cursor) ? message.cursor : undefined;
       const { kind, cursor, change } = await snapshotOf(subject, earlier);
       if (this.ws.readyState !== this.ws.OPEN) return;
-      this.topics.set(topic, new Subscription(this, topic, subject, cursor));
+      this.topics.set(topic, new Subscription(this, topic, subject, cursor, change));
       this.send({ type: kind, topic, cursor, change });
     } catch (error) {
       if (!isDatabaseAway(error)) log.error({ error, topic }, 'a subscription failed');

@@ -1,3 +1,4 @@
+import { sentCause, type CauseSent } from '../../schemas/api/cause-sent';
 import type { CauseNow, SiteNow } from '../../schemas/api/now';
 import type { Change } from '../../schemas/live';
 import { asIngest, type Tx } from '../db/transaction';
@@ -21,8 +22,9 @@ export interface Listening {
   subject: Subject;
   /** Events of transactions below it were sent. */
   cursor: string;
-  /** The causes that were sent last, as text. */
+  /** The causes that were sent last, as text: of one site, or of a fleet by site. */
   causes: string;
+  causesAt: Map<string, string>;
 }
 export interface Delta<L extends Listening> {
   to: L;
@@ -176,14 +178,31 @@ async function readSite(
     inverters,
     ...(site && { site }),
     gateways: await gatewaysNow(tx, at, siteId),
-    causes: await causesNow(tx, at, [siteId]),
+    causes: (await causesNow(tx, at, [siteId])).map(sentCause),
   };
 }
 
+/** The causes of a site as they are sent. */
+interface Told {
+  site: string;
+  causes: CauseSent[];
+  text: string;
+}
 interface FleetParts {
   sites: SiteNow[];
-  causes: CauseNow[];
+  causes: Told[];
 }
+const told = new WeakMap<CauseNow[], Told>();
+/** Put into words once, as long as the list of the site is kept. */
+function toldOf(site: string, list: CauseNow[]): Told {
+  const known = told.get(list);
+  if (known) return known;
+  const causes = list.map(sentCause);
+  const made = { site, causes, text: JSON.stringify(causes) };
+  told.set(list, made);
+  return made;
+}
+
 async function readFleet(
   tx: Tx,
   at: Date,
@@ -198,7 +217,7 @@ async function readFleet(
   const kept = keptSites();
   return {
     sites: (await kept.read(tx, at, wanted)).sites,
-    causes: (await kept.read(tx, at, [...visible])).causes,
+    causes: (await kept.readEach(tx, at, [...visible])).map((s) => toldOf(s.site.id, s.causes)),
   };
 }
 
@@ -212,12 +231,7 @@ function overviewFor(
   if (subject.kind === 'fleet') {
     const sites = fleet?.sites.filter((s) => subject.refs.has(s.id)) ?? [];
     if (sites.length > 0) change.sites = sites;
-    if (fleet)
-      takeCauses(
-        listener,
-        fleet.causes.filter((c) => subject.refs.has(c.siteId)),
-        change,
-      );
+    if (fleet) takeCausesAt(listener, subject.refs, fleet.causes, change);
     return change;
   }
   if (!isOfSite(subject)) return change;
@@ -231,8 +245,33 @@ function overviewFor(
   return change;
 }
 
-/** Causes are sent as a whole list, and only when they differ from what was sent. */
-function takeCauses(listener: Listening, causes: CauseNow[], change: Change): void {
+/** Of a fleet the causes of those sites are sent where they differ from what was sent. */
+function takeCausesAt(
+  listener: Listening,
+  refs: ReadonlySet<string>,
+  causes: readonly Told[],
+  change: Change,
+): void {
+  const known = listener.causesAt;
+  const gone = new Set(known.keys());
+  const news: Change['causesAt'] = [];
+  for (const at of causes) {
+    gone.delete(at.site);
+    if (!refs.has(at.site) || (known.get(at.site) ?? NONE) === at.text) continue;
+    if (at.text === NONE) known.delete(at.site);
+    else known.set(at.site, at.text);
+    news.push({ site: at.site, causes: at.causes });
+  }
+  for (const site of gone) {
+    known.delete(site);
+    news.push({ site, causes: [] });
+  }
+  if (news.length > 0) change.causesAt = news;
+}
+const NONE = '[]';
+
+/** Of one site they are sent as a whole list, and only when they differ from what was sent. */
+function takeCauses(listener: Listening, causes: CauseSent[], change: Change): void {
   const text = JSON.stringify(causes);
   if (text === listener.causes) return;
   listener.causes = text;

@@ -1,4 +1,5 @@
 import { mayUse, type Actor, type Permission } from '../../domain/access/permissions';
+import { sent, sentCause } from '../../schemas/api/cause-sent';
 import type { Change } from '../../schemas/live';
 import { asActor, asIngest, type Tx } from '../db/transaction';
 import { horizon } from '../queries/horizon';
@@ -86,7 +87,7 @@ export const serialsHeard = (events: readonly LiveEvent[]): string[] =>
 
 async function stateOf(tx: Tx, subject: Subject, at: Date): Promise<Change> {
   if (subject.kind === 'notices') return { notices: await noticesNow(tx, subject.personId) };
-  if (subject.kind === 'fleet') return keptSites().read(tx, at, [...subject.siteIds]);
+  if (subject.kind === 'fleet') return sent(await keptSites().read(tx, at, [...subject.siteIds]));
   const { siteId } = subject;
   if (subject.kind === 'string')
     return {
@@ -101,7 +102,7 @@ async function stateOf(tx: Tx, subject: Subject, at: Date): Promise<Change> {
     strings,
     inverters: await invertersNow(tx, at, siteId),
     gateways: await gatewaysNow(tx, at, siteId),
-    causes: await causesNow(tx, at, [siteId]),
+    causes: (await causesNow(tx, at, [siteId])).map(sentCause),
   };
 }
 

@@ -20,7 +20,7 @@ export interface FleetStanding {
   sites: SiteNow[];
   causes: CauseNow[];
 }
-interface SiteStanding {
+export interface SiteStanding {
   site: SiteNow;
   causes: CauseNow[];
 }
@@ -66,6 +66,12 @@ export class KeptSites {
    * the actor may see them.
    */
   async read(tx: Tx, at: Date, siteIds: readonly number[]): Promise<FleetStanding> {
+    const standings = await this.readEach(tx, at, siteIds);
+    return { sites: standings.map((s) => s.site), causes: standings.flatMap((s) => s.causes) };
+  }
+
+  /** The same site by site; the lists of a site are the same objects as long as it is kept. */
+  async readEach(tx: Tx, at: Date, siteIds: readonly number[]): Promise<SiteStanding[]> {
     const nowMs = at.getTime();
     if (!this.hears()) return inOrder(siteIds, await readSites(tx, at, siteIds));
     // taken before anything is waited for: what changes meanwhile is no longer kept then
@@ -112,10 +118,8 @@ export class KeptSites {
   }
 }
 
-function inOrder(siteIds: readonly number[], found: ReadonlyMap<number, SiteStanding>): FleetStanding {
-  const standings = siteIds.flatMap((id) => found.get(id) ?? []);
-  return { sites: standings.map((s) => s.site), causes: standings.flatMap((s) => s.causes) };
-}
+const inOrder = (siteIds: readonly number[], found: ReadonlyMap<number, SiteStanding>): SiteStanding[] =>
+  siteIds.flatMap((id) => found.get(id) ?? []);
 
 async function readSites(tx: Tx, at: Date, siteIds: readonly number[]): Promise<Map<number, SiteStanding>> {
   if (siteIds.length === 0) return new Map();
