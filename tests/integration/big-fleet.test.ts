@@ -5,7 +5,10 @@ import { UNITS_A_SITE } from '../../seeds/fleet/plant';
 import { fleetLines } from '../../src/features/fleet/list';
 import { firstPage, LINES_AT_ONCE } from '../../src/features/fleet/first-page';
 import { FLEET_DEFAULTS } from '../../src/features/fleet/view';
+import { UNIT_STATES } from '../../src/domain/verdicts/codes';
+import { sentCause } from '../../src/schemas/api/cause-sent';
 import { asActor, asIngest } from '../../src/server/db/transaction';
+import { WAITING_MAX_BYTES } from '../../src/server/live/connection';
 import { sitesNow } from '../../src/server/queries/sites-now';
 import { causesNow } from '../../src/server/services/causes';
 import { readFleet, readShutdown } from '../../src/server/services/fleet';
@@ -214,5 +217,21 @@ describe('the first page of a large fleet', () => {
     );
     expect(whole).toMatchObject({ sites: 120, lines: 120 });
     expect(firstPage(fleet, FLEET_DEFAULTS)).toEqual({ fleet, whole: null });
+  });
+});
+
+describe('an outage in which every logger is away', () => {
+  it('leaves every unit silent with a cause, and a thousand such sites below what may wait for a browser', async () => {
+    await db.owner.query(
+      `update string_judgement set state = array_fill($1::int2, array[cardinality(state)]),
+         verdict = array_fill(0::int2, array[cardinality(state)]),
+         silent = cardinality(state), passing = 0, shutdown = 0, stuck = 0`,
+      [UNIT_STATES.indexOf('silent')],
+    );
+    const { sites, causes } = await asActor(actor, (tx) => readFleet(tx, NOW));
+    expect(causes.flatMap((c) => c.units)).toHaveLength(SITES * UNITS_A_SITE);
+    expect(causes.every((c) => c.verdict === 'silent')).toBe(true);
+    const bytes = JSON.stringify({ sites, causes: causes.map(sentCause) }).length;
+    expect((bytes / SITES) * 1000).toBeLessThan(WAITING_MAX_BYTES);
   });
 });

@@ -16,7 +16,7 @@ import { snapshotOf, subjectOf, type Subject } from './topics';
 import { liveRefusals } from '../../words/refusals';
 
 /** Bytes that may wait for a reader before it is sent away to come back with its cursors. */
-const WAITING_MAX_BYTES = 4 * 1024 * 1024;
+export const WAITING_MAX_BYTES = 4 * 1024 * 1024;
 const TOPICS_MAX = 20;
 
 export class Subscription implements Listening {
