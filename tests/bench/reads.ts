@@ -23,13 +23,15 @@ import { serve } from './ingest/server';
 
 /**
  * Pages and answers over HTTP while the whole fleet reports, for one organisation that has all of it: at 1,000, 10,000 and
- * 100,000 units, with the plan of every query in a folder. Fails where a plan reads a table of frames from end to end.
- * What a reading and a page cost at 100 times the units, as ratios. `BENCH_SIZES` (units with commas), `BENCH_ROUNDS`.
+ * 100,000 units, beside as many readings a second as the largest of them sends, one a minute of each unit; so what grows is
+ * what the size costs. With the plan of every query in a folder; fails where a plan reads a table of frames from end to end.
+ * What a reading and a page cost at ten times the units, as ratios. `BENCH_SIZES` (units with commas), `BENCH_ROUNDS`.
  */
 const PORT = Number(process.env.BENCH_PORT ?? 4441);
 const SIZES = (process.env.BENCH_SIZES ?? '1000,10000,100000').split(',').map(Number);
 const ROUNDS = Number(process.env.BENCH_ROUNDS ?? 40);
 const WARM_UP = 4;
+const REPORT_EVERY_S = 60;
 /** For what a reading costs: so many a second for so long. */
 const BURST_READINGS_A_S = 10_000;
 const BURST_S = 20;
@@ -167,10 +169,10 @@ async function measure(db: pg.Client, size: number): Promise<Cost> {
   try {
     const looker = await lookerAt(db, PORT);
     const places = await placesOf(db, looker.organisationId);
-    const load = loadOn(staged, PORT, { duration: 600, ramp: Math.max(2, size / 10_000) });
+    const interval = Math.max(1, Math.round((REPORT_EVERY_S * size) / Math.max(...SIZES)));
+    const load = loadOn(staged, PORT, { duration: 600, ramp: Math.max(2, size / 10_000), interval });
     await allConnected(load);
     say(`${load.connected()} loggers report; reading pages`);
-    // beside the fleet's own reports, which grow with it
     const pages = {} as Cost['pages'];
     for (const page of PAGES) {
       const took: number[] = [];
