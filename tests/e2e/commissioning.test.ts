@@ -1,7 +1,7 @@
 import type { Browser, BrowserContext, Page } from 'playwright-core';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import type { Role } from '../../src/domain/access/permissions';
-import { received, type Sent } from '../../src/schemas/api/cause-sent';
+import { received, type Sent } from '../../src/schemas/api/causes-on-the-way';
 import type { ShutdownNow } from '../../src/schemas/api/shutdown';
 import type { Simulator } from '../../simulator/engine';
 import { signedInContext, signInOn, startBrowser } from '../support/browser';

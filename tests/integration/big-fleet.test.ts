@@ -6,7 +6,7 @@ import { fleetLines } from '../../src/features/fleet/list';
 import { firstPage, LINES_AT_ONCE } from '../../src/features/fleet/first-page';
 import { FLEET_DEFAULTS } from '../../src/features/fleet/view';
 import { UNIT_STATES } from '../../src/domain/verdicts/codes';
-import { sentCause } from '../../src/schemas/api/cause-sent';
+import { sentCause } from '../../src/schemas/api/causes-on-the-way';
 import { asActor, asIngest } from '../../src/server/db/transaction';
 import { WAITING_MAX_BYTES } from '../../src/server/live/connection';
 import { sitesNow } from '../../src/server/queries/sites-now';

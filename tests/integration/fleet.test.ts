@@ -5,7 +5,7 @@ import { fleetLines } from '../../src/features/fleet/list';
 import { GET as fleetRoute } from '../../src/pages/api/fleet';
 import { GET as csvRoute } from '../../src/pages/api/fleet.csv';
 import { POST as acknowledgeRoute } from '../../src/pages/api/sites/[site]/acknowledge';
-import { received, type Sent } from '../../src/schemas/api/cause-sent';
+import { received, type Sent } from '../../src/schemas/api/causes-on-the-way';
 import { acknowledgeReply, fleetNow, type FleetNow } from '../../src/schemas/api/fleet';
 import { database } from '../../src/server/db/pools';
 import { asActor, asIngest } from '../../src/server/db/transaction';

@@ -4,7 +4,7 @@ import { shutdownFinding } from '../../src/features/shutdown/finding';
 import { heldSites, shutdownGroups } from '../../src/features/shutdown/groups';
 import { GET as shutdownRoute } from '../../src/pages/api/shutdown';
 import { GET as csvRoute } from '../../src/pages/api/shutdown.csv';
-import { received, type Sent } from '../../src/schemas/api/cause-sent';
+import { received, type Sent } from '../../src/schemas/api/causes-on-the-way';
 import { shutdownNow, type ShutdownNow } from '../../src/schemas/api/shutdown';
 import { testDatabase, type TestDatabase } from '../support/database';
 import { ask } from '../support/endpoint';

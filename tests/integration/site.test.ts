@@ -3,7 +3,7 @@ import type { Actor } from '../../src/domain/access/permissions';
 import { GET as siteRoute } from '../../src/pages/api/sites/[site]/index';
 import { GET as eventsRoute } from '../../src/pages/api/sites/[site]/events';
 import { GET as eventsCsvRoute } from '../../src/pages/api/sites/[site]/events.csv';
-import { received, type Sent } from '../../src/schemas/api/cause-sent';
+import { received, type Sent } from '../../src/schemas/api/causes-on-the-way';
 import { eventsPage, sitePage, type SitePage } from '../../src/schemas/api/site';
 import { database } from '../../src/server/db/pools';
 import { asActor } from '../../src/server/db/transaction';

@@ -9,13 +9,14 @@ import { Sheet } from '../../components/ui/Sheet';
 import { ShowMore } from '../../components/ui/ShowMore';
 import { useNow } from '../../components/ui/Time';
 import { useReaderZone } from '../../components/ui/reader-zone';
+import { later } from '../../lib/later';
 import { useLive } from '../../lib/live-hook';
 import { unpacking } from '../../lib/packed';
 import { tellsOfCauses } from '../../lib/patch';
 import { queryClient } from '../../lib/query-client';
 import { useReadAgain } from '../../lib/read-again';
 import { useViewInUrl } from '../../lib/view-in-url';
-import { received, type Sent } from '../../schemas/api/cause-sent';
+import { received, type Sent } from '../../schemas/api/causes-on-the-way';
 import type { AcknowledgeReply, FleetNow, FleetView, SinceLastLook as Missed } from '../../schemas/api/fleet';
 import { FleetFilters } from './FleetFilters';
 import { FleetTable } from './FleetTable';
@@ -26,6 +27,11 @@ import { fleetLines } from './list';
 import { changedFleet, fleetKey, fleetQuery, withAcknowledgement } from './query';
 import { FLEET_DEFAULTS, sortInWords } from './view';
 import { fleetBoard } from '../../words/fleet';
+
+const Since = later(
+  async () => (await import('./SinceLastLook')).SinceLastLook,
+  import.meta.env.SSR ? SinceLastLook : null,
+);
 
 interface Props {
   initial: Sent<FleetNow>;
@@ -98,9 +104,7 @@ export const FleetBoard = unpacking(function FleetBoard({
       >
         {fleetBoard.whatIsShownMay}
       </NotRead>
-      {missed && missed.items.length > 0 && (
-        <SinceLastLook missed={missed} now={initial.at} timeZone={readerZone} />
-      )}
+      {missed && missed.items.length > 0 && <Since missed={missed} now={initial.at} timeZone={readerZone} />}
       {causes.length > 0 && (
         <section aria-labelledby="causes" className="mb-8">
           <h2 id="causes" className="mb-2.5 text-[15px] leading-5 tracking-[-0.01em]">

@@ -1,7 +1,7 @@
 import { queryOptions } from '@tanstack/react-query';
 import { api } from '../../lib/api';
 import { replaced } from '../../lib/patch';
-import { causesAfter, received, type Sent } from '../../schemas/api/cause-sent';
+import { causesAfter, received, type Sent } from '../../schemas/api/causes-on-the-way';
 import type { AcknowledgeReply, FleetNow } from '../../schemas/api/fleet';
 import type { Change } from '../../schemas/live';
 import { paths } from '../../schemas/paths';

@@ -19,7 +19,7 @@ import { tellsOfCauses } from '../../lib/patch';
 import { queryClient } from '../../lib/query-client';
 import { useReadAgain } from '../../lib/read-again';
 import { useViewInUrl } from '../../lib/view-in-url';
-import { received, type Sent } from '../../schemas/api/cause-sent';
+import { received, type Sent } from '../../schemas/api/causes-on-the-way';
 import type { CauseNow } from '../../schemas/api/now';
 import type { ShutdownNow, ShutdownView } from '../../schemas/api/shutdown';
 import { paths } from '../../schemas/paths';

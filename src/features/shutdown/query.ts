@@ -1,7 +1,7 @@
 import { queryOptions } from '@tanstack/react-query';
 import { api } from '../../lib/api';
 import { replaced } from '../../lib/patch';
-import { causesAfter, received, type Sent } from '../../schemas/api/cause-sent';
+import { causesAfter, received, type Sent } from '../../schemas/api/causes-on-the-way';
 import type { AcknowledgeReply } from '../../schemas/api/fleet';
 import type { ShutdownNow } from '../../schemas/api/shutdown';
 import type { Change } from '../../schemas/live';

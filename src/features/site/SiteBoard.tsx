@@ -12,7 +12,7 @@ import { useLive } from '../../lib/live-hook';
 import { unpacking } from '../../lib/packed';
 import { queryClient } from '../../lib/query-client';
 import { useViewInUrl } from '../../lib/view-in-url';
-import { received, type Sent } from '../../schemas/api/cause-sent';
+import { received, type Sent } from '../../schemas/api/causes-on-the-way';
 import type { CaseItem } from '../../schemas/api/cases';
 import type { AcknowledgeReply } from '../../schemas/api/fleet';
 import type { SiteStanding } from '../../schemas/api/causes';
@@ -36,6 +36,10 @@ import {
 } from './query';
 import { siteBoard } from '../../words/site';
 
+const Standing = later(
+  async () => (await import('./StandingSheet')).StandingSheet,
+  import.meta.env.SSR ? StandingSheet : null,
+);
 const Further = later(
   async () => (await import('./FurtherSheets')).FurtherSheets,
   import.meta.env.SSR ? FurtherSheets : null,
@@ -138,7 +142,7 @@ export const SiteBoard = unpacking(function SiteBoard({
           </a>
         )}
       </nav>
-      <StandingSheet siteId={id} standing={standing} now={now} timeZone={timeZone} />
+      <Standing siteId={id} standing={standing} now={now} timeZone={timeZone} />
       <NotRead
         error={error}
         title={siteBoard.theSiteCouldNot}

@@ -2,7 +2,7 @@ import { infiniteQueryOptions, queryOptions, type InfiniteData } from '@tanstack
 import type { EventKind } from '../../domain/verdicts/codes';
 import { api } from '../../lib/api';
 import { replaced, tells, tellsOfCauses } from '../../lib/patch';
-import { causesAfter, received, type Sent } from '../../schemas/api/cause-sent';
+import { causesAfter, received, type Sent } from '../../schemas/api/causes-on-the-way';
 import type { AcknowledgeReply } from '../../schemas/api/fleet';
 import type { EventItem } from '../../schemas/api/now';
 import type { EventsPage, SitePage } from '../../schemas/api/site';

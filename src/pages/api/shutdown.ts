@@ -1,4 +1,4 @@
-import { sent } from '../../schemas/api/cause-sent';
+import { sent } from '../../schemas/api/causes-on-the-way';
 import { endpoint } from '../../server/http/endpoint';
 import { readShutdown } from '../../server/services/fleet';
 

@@ -1,4 +1,5 @@
-import { sentCause, type CauseSent } from '../../schemas/api/cause-sent';
+import type { CauseSent } from '../../schemas/api/cause-sent';
+import { sentCause } from '../../schemas/api/causes-on-the-way';
 import type { CauseNow, SiteNow } from '../../schemas/api/now';
 import type { Change } from '../../schemas/live';
 import { asIngest, type Tx } from '../db/transaction';

@@ -1,5 +1,5 @@
 import { mayUse, type Actor, type Permission } from '../../domain/access/permissions';
-import { sent, sentCause } from '../../schemas/api/cause-sent';
+import { sent, sentCause } from '../../schemas/api/causes-on-the-way';
 import type { Change } from '../../schemas/live';
 import { asActor, asIngest, type Tx } from '../db/transaction';
 import { horizon } from '../queries/horizon';

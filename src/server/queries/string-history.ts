@@ -18,11 +18,17 @@ export interface Window {
 }
 export type Quantity = 'voltage' | 'current' | 'power';
 
-/** One report's figure: units of a string carry one current, so the middle one stands for it. */
-const OF_FRAME: Record<Quantity, string> = {
-  voltage: 'voltage_sum / 100.0::float8',
-  power: 'power_sum / 10.0::float8',
-  current: '(select percentile_cont(0.5) within group (order by c) from unnest(current) c) / 1000.0',
+/**
+ * One report's figure, in so many parts of a V, W or A: units of a string carry one current, so the middle one stands for it.
+ * Whole numbers are summed exactly, in whatever order they come, and quickly.
+ */
+const OF_FRAME: Record<Quantity, { value: string; per: number }> = {
+  voltage: { value: 'voltage_sum', per: 100 },
+  power: { value: 'power_sum', per: 10 },
+  current: {
+    value: '(select percentile_cont(0.5) within group (order by c) from unnest(current) c)',
+    per: 1000,
+  },
 };
 const FRAME_COLUMNS: Record<Quantity, readonly FrameColumn[]> = {
   voltage: ['voltage_sum', 'power_sum'],
@@ -55,11 +61,12 @@ export async function stringMinutes(
   stepS: number,
   quantity: Quantity,
 ): Promise<HistoryPoint[]> {
+  const { value, per } = OF_FRAME[quantity];
   const { rows } = await tx.raw<{ rows: HistoryPoint[] }>(
-    `select extract(epoch from step)::int8 as at, avg(v)::float8 as value, min(v)::float8 as low, max(v)::float8 as high,
-            avg(power_sum)::float8 / 10 * :stepS / 3600 as energy
+    `select extract(epoch from step)::int8 as at, avg(v)::float8 / ${per} as value, min(v)::float8 / ${per} as low,
+            max(v)::float8 / ${per} as high, avg(power_sum)::float8 / 10 * :stepS / 3600 as energy
      from (select date_bin(make_interval(secs => :stepS), at, timestamptz '2000-01-01 00:00Z') as step,
-                  ${OF_FRAME[quantity]} as v, power_sum
+                  ${value} as v, power_sum
            from ${framesOf({ columns: FRAME_COLUMNS[quantity], strings: oneString(':stringId'), ...SPAN })} r) f
      where v is not null group by step order by step`,
     { stringId, stepS, ...window },
@@ -110,8 +117,8 @@ export async function stringDays(
 }
 
 const OF_INPUT: Record<Quantity, string> = {
-  voltage: 'voltage / 10.0::float8',
-  current: 'current / 100.0::float8',
+  voltage: 'voltage / 10.0',
+  current: 'current / 100.0',
   power: 'voltage::float8 * current / 1000.0',
 };
 
@@ -166,11 +173,11 @@ interface SiblingOptions {
   quantity: Quantity;
 }
 
-/** What each string told in a step: its voltage (cV), and the quantity itself in V, A, W, or kWh a day. */
+/** What each string told in a step: its voltage (cV), and the quantity itself in V, A, W (of reports in parts of these), or kWh a day. */
 const sourceOf = ({ resolution, quantity }: SiblingOptions): string =>
   ({
     minute: `select string_id, date_bin(make_interval(secs => :stepS), at, timestamptz '2000-01-01 00:00Z') as step,
-                    voltage_sum as voltage, ${OF_FRAME[quantity]} as v
+                    voltage_sum as voltage, ${OF_FRAME[quantity].value} as v
              from ${framesOf({ columns: FRAME_COLUMNS[quantity], strings: anyString, ...SPAN })} r`,
     quarter: `select string_id, at as step, voltage_avg as voltage, ${OF_QUARTER[quantity].value} as v
               from string_quarter where string_id = any (:ids) and at >= :from and at < :to`,
@@ -184,7 +191,8 @@ const sourceOf = ({ resolution, quantity }: SiblingOptions): string =>
 const eachOf = (options: SiblingOptions): string => `
   with told as (${sourceOf(options)}),
   each as (
-    select step, t.string_id, avg(t.v)::float8 ${options.quantity === 'current' ? '' : '/ u.units'} as v
+    select step, t.string_id, avg(t.v)::float8 / ${options.resolution === 'minute' ? OF_FRAME[options.quantity].per : 1}
+             ${options.quantity === 'current' ? '' : '/ u.units'} as v
     from told t join unnest(:ids::int4[], :units::int4[]) as u(id, units) on u.id = t.string_id
     group by step, t.string_id, u.units having avg(t.voltage)::float8 / 100 / u.units >= :passingFrom)`;
 

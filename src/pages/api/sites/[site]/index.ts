@@ -1,4 +1,4 @@
-import { sent } from '../../../../schemas/api/cause-sent';
+import { sent } from '../../../../schemas/api/causes-on-the-way';
 import { siteParams } from '../../../../schemas/api/site';
 import { endpoint } from '../../../../server/http/endpoint';
 import { readSite } from '../../../../server/services/site-page';

@@ -1,6 +1,7 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import { causesAfter, causeSent, received, receivedCause, sent, sentCause } from './cause-sent';
+import { causeSent } from './cause-sent';
+import { causesAfter, received, receivedCause, sent, sentCause } from './causes-on-the-way';
 import type { CauseNow } from './now';
 
 const ids = Array.from({ length: 4 }, (_, k) => `00000000-0000-4000-8000-00000000000${k}`);
