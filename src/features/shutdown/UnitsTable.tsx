@@ -1,3 +1,5 @@
+import { useState } from 'react';
+import { isHazard } from '../../components/causes/words';
 import { Table, type Column } from '../../components/ui/Table';
 import { siteClock, useReaderZone } from '../../components/ui/reader-zone';
 import { fullTime } from '../../drawings/times';
@@ -16,6 +18,8 @@ const byPlace = (a: Unit, b: Unit): number =>
 /** The units of one cause, in the order in which a person walks them. */
 export function UnitsTable({ cause, timeZone, now }: { cause: CauseNow; timeZone: string; now: string }) {
   const readerZone = useReaderZone();
+  // what holds no hazard is drawn once it is opened: in an outage every site has a hundred units here
+  const [open, setOpen] = useState(isHazard(cause));
   const units = [...cause.units].sort(byPlace);
   const columns: Column<Unit>[] = [
     {
@@ -62,11 +66,11 @@ export function UnitsTable({ cause, timeZone, now }: { cause: CauseNow; timeZone
   if (units.length === 0) return null;
   if (units.length <= AT_ONCE) return table(units);
   return (
-    <details>
+    <details onToggle={(event) => setOpen(open || event.currentTarget.open)}>
       <summary className="target inline-flex cursor-pointer items-center font-medium text-petrol hover:underline">
         {unitsTable.allByPosition(units.length)}
       </summary>
-      {table(units)}
+      {open && table(units)}
     </details>
   );
 }
