@@ -66,7 +66,10 @@ export class Ingest implements SessionHost {
       // a logger on both ways: its connection says more of it, and comes last
       progress: () => [
         ...this.overHttps.progress().map(({ logger, spokeAt }) => this.progressOf(logger, spokeAt)),
-        ...[...this.serving.values()].map(({ logger, spokeAt }) => this.progressOf(logger, spokeAt)),
+        // what a paused one could not say it did not keep to itself
+        ...[...this.serving.values()].map(({ logger, spokeAt, resumedAt }) =>
+          this.progressOf(logger, Math.max(spokeAt, resumedAt)),
+        ),
       ],
     });
     this.queue = new Queue({

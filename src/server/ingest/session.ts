@@ -29,6 +29,8 @@ const PING_EVERY_MS = 20_000;
 export class Session {
   /** Wall-clock ms of the newest message. */
   spokeAt = Date.now();
+  /** Wall-clock ms since when it may speak again after it was paused. */
+  resumedAt = 0;
   private readonly views = new Map<number, RosterView>();
   private current: RosterView | undefined;
   private readonly backlog: { data: Buffer; isBinary: boolean }[] = [];
@@ -71,8 +73,7 @@ export class Session {
     this.paused = paused;
     if (paused) this.ws.pause();
     else {
-      // what it could not say meanwhile it does not keep to itself
-      this.spokeAt = Date.now();
+      this.resumedAt = Date.now();
       if (!this.busy) this.ws.resume();
     }
   }
