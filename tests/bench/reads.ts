@@ -30,7 +30,8 @@ import { serve } from './ingest/server';
 const PORT = Number(process.env.BENCH_PORT ?? 4441);
 const SIZES = (process.env.BENCH_SIZES ?? '1000,10000,100000').split(',').map(Number);
 const ROUNDS = Number(process.env.BENCH_ROUNDS ?? 40);
-const WARM_UP = 4;
+/** Before it counts, of each page: a process that has just come up has not compiled what it does often. */
+const WARM_UP = 40;
 const REPORT_EVERY_S = 60;
 /** For what a reading costs: so many a second for so long. */
 const BURST_READINGS_A_S = 10_000;
