@@ -14,7 +14,7 @@ import {
 import { judgedSite } from '../queries/judgement-contexts';
 import { UNCHANGED } from '../../domain/verdicts/evidence';
 import { seenPassing } from '../../domain/verdicts/conductors';
-import { servedElsewhere, type KnownLogger } from '../queries/ingest-loggers';
+import { servedElsewhere } from '../queries/ingest-loggers';
 import { thisProcess } from '../process';
 import { CHANNELS, sendNotices } from '../queries/live-notices';
 import type { Batch } from './batch';
@@ -25,6 +25,8 @@ import type { Notices } from './notices';
 import { eventTime, type Progress } from './progress';
 import type { Written } from './write-batch';
 
+type InputRead = Awaited<ReturnType<typeof inputsOf>>[number];
+
 const SWEEP_EVERY_MS = 10_000;
 const AIR_EVERY_S = 300;
 /** What is known of other processes' loggers is asked for again after this, seconds. */
@@ -34,7 +36,6 @@ const FRAMES_A_READ = 400;
 const FIRST_LOOK_BACK_S = 6 * 3600;
 
 export interface LoggerProgress {
-  logger: KnownLogger;
   /** Wall-clock ms of its newest message. */
   spokeAt: number;
   newestS: number;
@@ -43,8 +44,8 @@ export interface LoggerProgress {
 
 export interface JudgementHost {
   notices: Notices;
-  /** The loggers that this process serves. */
-  progress: () => LoggerProgress[];
+  /** Of a logger that this process serves. */
+  progressOf: (loggerId: number) => LoggerProgress | undefined;
 }
 
 /**
@@ -326,7 +327,8 @@ export class Judgement {
   private async sweepSite(judge: SiteJudge, nowS: number): Promise<void> {
     if (nowS - judge.airLookedAtS >= AIR_EVERY_S)
       judge.takeAir(await temperatureAirOf(database('ingest'), judge.site.id), nowS);
-    const progress = await this.progressOf(judge, nowS);
+    const inputs = await inputsOf(database('ingest'), judge.site.id);
+    const progress = await this.progressOf(judge, inputs, nowS);
     const outcomes: { site: SiteJudge; outcome: Outcome }[] = [];
     for (const judged of [...judge.strings.values()]) {
       const atS = eventTime(progress(judged.string.loggerId), judge.reportIntervalS, nowS);
@@ -334,16 +336,17 @@ export class Judgement {
       const outcome = judge.sweep(judged, atS);
       if (outcome) outcomes.push({ site: judge, outcome });
     }
-    outcomes.push(...(await this.judgeInputs(judge)));
+    outcomes.push(...(await this.judgeInputs(judge, inputs)));
     await this.keep(judge, outcomes);
   }
 
-  /** Input readings that came since the last sweep. */
-  private async judgeInputs(judge: SiteJudge): Promise<{ site: SiteJudge; outcome: Outcome }[]> {
+  /** Judges the input readings that came since the last sweep. */
+  private async judgeInputs(
+    judge: SiteJudge,
+    inputs: readonly InputRead[],
+  ): Promise<{ site: SiteJudge; outcome: Outcome }[]> {
     const outcomes: { site: SiteJudge; outcome: Outcome }[] = [];
-    const fresh = (await inputsOf(database('ingest'), judge.site.id)).filter(
-      (i) => i.atS > (this.judgedInputs.get(i.inputId) ?? 0),
-    );
+    const fresh = inputs.filter((i) => i.atS > (this.judgedInputs.get(i.inputId) ?? 0));
     if (fresh.length === 0) return outcomes;
     const modules = await expectedModules(judge);
     for (const input of fresh) {
@@ -370,23 +373,26 @@ export class Judgement {
    * How far the reports of each logger are known to have come. One that another process serves is followed too, by what
    * is stored of it: while it brings what it kept through an outage, nothing of its past is over yet.
    */
-  private async progressOf(judge: SiteJudge, nowS: number): Promise<(loggerId: number | null) => Progress> {
+  private async progressOf(
+    judge: SiteJudge,
+    inputs: readonly InputRead[],
+    nowS: number,
+  ): Promise<(loggerId: number | null) => Progress> {
     if (nowS - this.elsewhere.atS >= ELSEWHERE_FRESH_S)
       this.elsewhere = { atS: nowS, spokeS: await servedElsewhere(database('ingest'), thisProcess().id) };
-    const served = new Map(this.host.progress().map((p) => [p.logger.id, p]));
-    for (const id of served.keys()) this.lastServedS.set(id, nowS);
+    const inputS = new Map(inputs.map((i) => [i.inputId, i.atS]));
     return (loggerId) => {
       if (loggerId === null) return { served: false, sinceS: this.startedS };
-      const p = served.get(loggerId);
-      if (p) return { ...p, served: true, spokeS: Math.floor(p.spokeAt / 1000) };
-      const spokeS = this.elsewhere.spokeS.get(loggerId);
+      const here = this.host.progressOf(loggerId);
+      const spokeS = here ? Math.floor(here.spokeAt / 1000) : this.elsewhere.spokeS.get(loggerId);
       if (spokeS === undefined)
         return { served: false, sinceS: this.lastServedS.get(loggerId) ?? this.startedS };
       this.lastServedS.set(loggerId, nowS);
+      if (here) return { ...here, served: true, spokeS };
       let newestS = 0;
       for (const { string, memory } of judge.strings.values())
         if (string.loggerId === loggerId)
-          newestS = Math.max(newestS, memory.atS, this.judgedInputs.get(string.inputId) ?? 0);
+          newestS = Math.max(newestS, memory.atS, inputS.get(string.inputId) ?? 0);
       return { served: true, spokeS, newestS, waiting: false };
     };
   }

@@ -32,7 +32,6 @@ const HELD_INTERVALS = 3;
 const HELD_MIN_S = 90;
 
 interface Presence {
-  logger: KnownLogger;
   /** Wall-clock ms of its last batch. */
   spokeAt: number;
   heldUntil: number;
@@ -74,11 +73,12 @@ export class OverHttps {
 
   constructor(private readonly host: OverHttpsHost) {}
 
-  /** Loggers whose last batch is not long ago, for the judgement of this process. */
-  progress(): Presence[] {
-    const now = Date.now();
-    for (const [id, p] of this.presences) if (p.heldUntil < now) this.presences.delete(id);
-    return [...this.presences.values()];
+  /** A logger whose last batch is not long ago, for the judgement of this process. */
+  presenceOf(loggerId: number): Presence | undefined {
+    const presence = this.presences.get(loggerId);
+    if (!presence || presence.heldUntil >= Date.now()) return presence;
+    this.presences.delete(loggerId);
+    return undefined;
   }
 
   /** No more batches; those that wait are told that they may not be kept. */
@@ -130,7 +130,6 @@ export class OverHttps {
     const now = new Date();
     await touchTokens(db, [{ tokenId: logger.tokenId, at: now, address }]);
     const presence: Presence = {
-      logger,
       spokeAt: now.getTime(),
       heldUntil: now.getTime() + holdS * 1000,
     };

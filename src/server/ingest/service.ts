@@ -63,14 +63,7 @@ export class Ingest implements SessionHost {
   constructor() {
     this.judgement = new Judgement({
       notices: this.notices,
-      // a logger on both ways: its connection says more of it, and comes last
-      progress: () => [
-        ...this.overHttps.progress().map(({ logger, spokeAt }) => this.progressOf(logger, spokeAt)),
-        // what a paused one could not say it did not keep to itself
-        ...[...this.serving.values()].map(({ logger, spokeAt, resumedAt }) =>
-          this.progressOf(logger, Math.max(spokeAt, resumedAt)),
-        ),
-      ],
+      progressOf: (loggerId) => this.progressOf(loggerId),
     });
     this.queue = new Queue({
       written: (batch, written) => this.written(batch, written),
@@ -213,9 +206,16 @@ export class Ingest implements SessionHost {
     await this.judgement.written(batch, written);
   }
 
-  private progressOf(logger: KnownLogger, spokeAt: number): LoggerProgress {
-    const { newestS, waiting } = this.reports.of(logger.id);
-    return { logger, spokeAt, newestS, waiting: waiting || this.queue.paused };
+  private progressOf(loggerId: number): LoggerProgress | undefined {
+    // of a logger on both ways its connection says more
+    const session = this.serving.get(loggerId);
+    // what a paused one could not say it did not keep to itself
+    const spokeAt = session
+      ? Math.max(session.spokeAt, session.resumedAt)
+      : this.overHttps.presenceOf(loggerId)?.spokeAt;
+    if (spokeAt === undefined) return undefined;
+    const { newestS, waiting } = this.reports.of(loggerId);
+    return { spokeAt, newestS, waiting: waiting || this.queue.paused };
   }
 
   private pressure(paused: boolean): void {
