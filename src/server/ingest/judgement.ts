@@ -10,6 +10,7 @@ import {
   releaseSites,
   takeSites,
   temperatureAirOf,
+  type InputRead,
 } from '../queries/judgement';
 import { judgedSite } from '../queries/judgement-contexts';
 import { UNCHANGED } from '../../domain/verdicts/evidence';
@@ -24,8 +25,6 @@ import { SiteJudge, type Outcome } from './judge-site';
 import type { Notices } from './notices';
 import { eventTime, type Progress } from './progress';
 import type { Written } from './write-batch';
-
-type InputRead = Awaited<ReturnType<typeof inputsOf>>[number];
 
 const SWEEP_EVERY_MS = 10_000;
 const AIR_EVERY_S = 300;
@@ -239,7 +238,8 @@ export class Judgement {
         judge,
         anew.map((judged) => ({ site: judge, outcome: { judged, outcome: UNCHANGED } })),
       );
-      await this.sweepSite(judge, nowS);
+      const inputs = await inputsOf(database('ingest'), [siteId]);
+      await this.sweepSite(judge, inputs.get(siteId) ?? [], nowS);
     };
     const entry = waiting ?? { current: Promise.resolve() };
     const next = entry.current.then(() => {
@@ -314,20 +314,20 @@ export class Judgement {
       this.stale.delete(id);
       if (this.held.has(id)) await this.read(id);
     }
+    const inputs = await inputsOf(database('ingest'), [...this.sites.keys()]);
     const nowS = Math.floor(Date.now() / 1000);
     for (const judge of [...this.sites.values()]) {
       if (this.stopping) return;
       if (judge.dead || judge.catchingUp) continue;
-      await this.sweepSite(judge, nowS);
+      await this.sweepSite(judge, inputs.get(judge.site.id) ?? [], nowS);
       this.writer.checkpoint(judge, false);
     }
     await this.writer.flush();
   }
 
-  private async sweepSite(judge: SiteJudge, nowS: number): Promise<void> {
+  private async sweepSite(judge: SiteJudge, inputs: readonly InputRead[], nowS: number): Promise<void> {
     if (nowS - judge.airLookedAtS >= AIR_EVERY_S)
       judge.takeAir(await temperatureAirOf(database('ingest'), judge.site.id), nowS);
-    const inputs = await inputsOf(database('ingest'), judge.site.id);
     const progress = await this.progressOf(judge, inputs, nowS);
     const outcomes: { site: SiteJudge; outcome: Outcome }[] = [];
     for (const judged of [...judge.strings.values()]) {

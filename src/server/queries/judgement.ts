@@ -93,19 +93,29 @@ async function singleAfter(
   return rows;
 }
 
-/** Newest report of each input of a site. Epoch s, V, A. */
-export async function inputsOf(
-  db: Knex,
-  siteId: number,
-): Promise<{ inputId: number; atS: number; voltageV: number | null; currentA: number | null }[]> {
-  const { rows } = await db.raw<{
-    rows: { inputId: number; atS: number; voltageV: number | null; currentA: number | null }[];
-  }>(
-    `select input_id as "inputId", extract(epoch from at)::int4 as "atS", voltage / 10.0::float8 as "voltageV",
-       current / 100.0::float8 as "currentA" from input_state where site_id = ?`,
-    [siteId],
+/** An input's newest report. Epoch s, V, A. */
+export interface InputRead {
+  inputId: number;
+  atS: number;
+  voltageV: number | null;
+  currentA: number | null;
+}
+
+/** The newest report of each input, by site. */
+export async function inputsOf(db: Knex, siteIds: readonly number[]): Promise<Map<number, InputRead[]>> {
+  const { rows } = await db.raw<{ rows: (InputRead & { siteId: number })[] }>(
+    `select site_id as "siteId", input_id as "inputId", extract(epoch from at)::int4 as "atS",
+       voltage / 10.0::float8 as "voltageV", current / 100.0::float8 as "currentA"
+     from input_state where site_id = any (?)`,
+    [[...siteIds]],
   );
-  return rows;
+  const sites = new Map<number, InputRead[]>();
+  for (const { siteId, ...input } of rows) {
+    const list = sites.get(siteId);
+    if (list) list.push(input);
+    else sites.set(siteId, [input]);
+  }
+  return sites;
 }
 
 /** The coldest air (°C) that a site's sensors report now; null: none does. */
