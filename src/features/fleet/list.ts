@@ -1,3 +1,4 @@
+import { bySite } from '../../schemas/api/causes-on-the-way';
 import type { FleetView } from '../../schemas/api/fleet';
 import type { CauseNow, SiteNow } from '../../schemas/api/now';
 import { asksForSomebody, concernedAt, needOf, urgency, type Need } from './need';
@@ -31,17 +32,12 @@ const SORT: Record<FleetView['sort'], (a: FleetLine, b: FleetLine, order: FleetV
 };
 
 const NONE: readonly CauseNow[] = [];
-const bySite = new WeakMap<readonly CauseNow[], Map<string, CauseNow[]>>();
+const grouped = new WeakMap<readonly CauseNow[], Map<string, CauseNow[]>>();
 function causesBySite(causes: readonly CauseNow[]): Map<string, CauseNow[]> {
-  const known = bySite.get(causes);
+  const known = grouped.get(causes);
   if (known) return known;
-  const made = new Map<string, CauseNow[]>();
-  for (const cause of causes) {
-    const list = made.get(cause.siteId);
-    if (list) list.push(cause);
-    else made.set(cause.siteId, [cause]);
-  }
-  bySite.set(causes, made);
+  const made = bySite(causes);
+  grouped.set(causes, made);
   return made;
 }
 

@@ -3,7 +3,7 @@ import { causeNow, id } from './now';
 
 /**
  * Causes as they go to a browser. A logger that is away takes a hundred units with it and an outage some hundred loggers:
- * units of one string that are so since one moment are sent together, a tenth of what they are one by one.
+ * units of one string that are so since one moment are sent together, less than a fifth of what they are one by one.
  */
 const unitsSent = z.object({
   stringId: id,

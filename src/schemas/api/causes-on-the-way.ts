@@ -3,6 +3,7 @@ import type { CauseNow } from './now';
 
 // apart from their schema, which browsers do without
 
+/** A cause with the units of each string that are so since one moment together: nothing of it is left out. */
 export function sentCause({ units, ...cause }: CauseNow): CauseSent {
   const strings = new Map<string, CauseSent['strings'][number]>();
   for (const { stringId, stringName, since, position, serial } of units) {
@@ -15,12 +16,24 @@ export function sentCause({ units, ...cause }: CauseNow): CauseSent {
   return { ...cause, strings: [...strings.values()] };
 }
 
+/** The cause as it was, but that units of one string stand together. */
 export const receivedCause = ({ strings, ...cause }: CauseSent): CauseNow => ({
   ...cause,
   units: strings.flatMap(({ stringId, stringName, since, positions, serials }) =>
     positions.map((position, i) => ({ stringId, stringName, position, serial: serials[i] ?? null, since })),
   ),
 });
+
+/** Causes by their site, in their order. */
+export function bySite<C extends { siteId: string }>(causes: readonly C[]): Map<string, C[]> {
+  const sites = new Map<string, C[]>();
+  for (const cause of causes) {
+    const list = sites.get(cause.siteId);
+    if (list) list.push(cause);
+    else sites.set(cause.siteId, [cause]);
+  }
+  return sites;
+}
 
 /** Something with causes, as it is sent. */
 export type Sent<T extends { causes: CauseNow[] }> = Omit<T, 'causes'> & { causes: CauseSent[] };

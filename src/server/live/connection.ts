@@ -1,6 +1,6 @@
 import type { WebSocket } from 'ws';
 import type { Actor } from '../../domain/access/permissions';
-import type { CauseSent } from '../../schemas/api/cause-sent';
+import { bySite } from '../../schemas/api/causes-on-the-way';
 import {
   CLOSE_COME_BACK,
   clientMessage,
@@ -34,16 +34,6 @@ export class Subscription implements Listening {
     if (subject.kind === 'fleet')
       for (const [site, list] of bySite(causes)) this.causesAt.set(site, JSON.stringify(list));
   }
-}
-
-function bySite(causes: readonly CauseSent[]): Map<string, CauseSent[]> {
-  const sites = new Map<string, CauseSent[]>();
-  for (const cause of causes) {
-    const list = sites.get(cause.siteId);
-    if (list) list.push(cause);
-    else sites.set(cause.siteId, [cause]);
-  }
-  return sites;
 }
 
 /** One browser's socket and what it listens to. */

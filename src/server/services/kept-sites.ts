@@ -1,3 +1,4 @@
+import { bySite } from '../../schemas/api/causes-on-the-way';
 import type { CauseNow, SiteNow } from '../../schemas/api/now';
 import { asIngest, type Tx } from '../db/transaction';
 import { sitesNow } from '../queries/sites-now';
@@ -124,12 +125,7 @@ const inOrder = (siteIds: readonly number[], found: ReadonlyMap<number, SiteStan
 async function readSites(tx: Tx, at: Date, siteIds: readonly number[]): Promise<Map<number, SiteStanding>> {
   if (siteIds.length === 0) return new Map();
   const sites = new Map((await sitesNow(tx, at, siteIds)).map((site) => [site.id, site]));
-  const causes = new Map<string, CauseNow[]>();
-  for (const cause of await causesNow(tx, at, siteIds)) {
-    const list = causes.get(cause.siteId);
-    if (list) list.push(cause);
-    else causes.set(cause.siteId, [cause]);
-  }
+  const causes = bySite(await causesNow(tx, at, siteIds));
   return new Map(
     (await siteRefs(tx, siteIds)).flatMap(({ id, ref }) => {
       const site = sites.get(ref);
