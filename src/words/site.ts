@@ -166,6 +166,7 @@ export const zonesSheet = {
   inForce: 'In force',
   notReportedYet: 'not reported yet',
   transmitterSince: (where: string, word: string) => `Transmitter ${where}: ${word.toLowerCase()} since `,
+  since: 'since ',
   sinceBy: 'Since, by',
   initiator: 'Initiator',
   whatIsCommanded: 'What is commanded',

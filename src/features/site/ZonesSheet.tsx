@@ -36,6 +36,13 @@ export const ZonesSheet = memo(function ZonesSheet({
   timeZone: string;
   zone: boolean;
 }) {
+  const sinceBy = ({ command }: ZoneNow) =>
+    command && (
+      <>
+        <SiteTime at={command.since} now={now} timeZone={timeZone} zone={named} />
+        {command.by && <span className="block text-sm text-ink-2">{command.by}</span>}
+      </>
+    );
   const columns: Column<ZoneNow>[] = [
     {
       key: 'zone',
@@ -59,6 +66,12 @@ export const ZonesSheet = memo(function ZonesSheet({
           ) : (
             <span>{zonesSheet.notReportedYet}</span>
           )}
+          {zone.command && (
+            <div className="text-sm sm:hidden">
+              {zonesSheet.since}
+              {sinceBy(zone)}
+            </div>
+          )}
           {zone.transmitters.map((t) => (
             <p key={t.where} className="text-sm">
               {zonesSheet.transmitterSince(t.where, WORDS[t.inForce].word)}
@@ -71,15 +84,8 @@ export const ZonesSheet = memo(function ZonesSheet({
     {
       key: 'since',
       label: zonesSheet.sinceBy,
-      cell: (zone) =>
-        zone.command ? (
-          <>
-            <SiteTime at={zone.command.since} now={now} timeZone={timeZone} zone={named} />
-            {zone.command.by && <span className="block text-sm text-ink-2">{zone.command.by}</span>}
-          </>
-        ) : (
-          '–'
-        ),
+      from: 'sm',
+      cell: (zone) => sinceBy(zone) ?? '–',
     },
     {
       key: 'initiator',
