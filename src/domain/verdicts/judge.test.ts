@@ -283,6 +283,17 @@ describe('silence and light', () => {
     report(memory, context, NOON + 1140, ['passing', 'passing', 'passing']);
     expect(states(memory)).toEqual(['passing', 'passing', 'passing']);
   });
+  it('says of a report that was overtaken by the silence before it no earlier time than the silence', () => {
+    const context = contextOf([released]);
+    const memory = running(context, NOON);
+    sweepString(memory, context, NOON + 200);
+    expect(states(memory)[0]).toBe('silent');
+    expect(report(memory, context, NOON + 60, ['passing', 'passing', 'passing']).map((c) => c.atS)).toEqual([
+      NOON + 180,
+      NOON + 180,
+      NOON + 180,
+    ]);
+  });
 });
 
 describe('an exchanged unit', () => {

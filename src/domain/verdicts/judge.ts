@@ -255,7 +255,7 @@ function decide(
   if (state === stateBefore && verdict === verdictBefore) return null;
   const due =
     state === SILENT && stateBefore !== SILENT && atS === asOf ? silentFrom(memory, context, i) : atS;
-  const at = Math.min(atS, Math.max(due, memory.since[i]!));
+  const at = Math.max(Math.min(atS, due), memory.since[i]!);
   memory.state[i] = state;
   memory.verdict[i] = verdict;
   memory.settled[i] = -1;

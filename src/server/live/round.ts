@@ -216,9 +216,15 @@ async function readFleet(
   const wanted = [...changed].filter((id) => visible.has(id));
   if (wanted.length === 0) return null;
   const kept = keptSites();
+  const inNews = await kept.readEach(tx, at, wanted);
+  const others = await kept.readEach(
+    tx,
+    at,
+    [...visible].filter((id) => !changed.has(id)),
+  );
   return {
-    sites: (await kept.read(tx, at, wanted)).sites,
-    causes: (await kept.readEach(tx, at, [...visible])).map((s) => toldOf(s.site.id, s.causes)),
+    sites: inNews.map((s) => s.site),
+    causes: [...inNews, ...others].map((s) => toldOf(s.site.id, s.causes)),
   };
 }
 
