@@ -46,6 +46,21 @@ describe('search', () => {
     expect(await find('estrel')).toEqual([]);
   });
 
+  it('finds sites by the beginning of any word of their place, those first whose name begins so', async () => {
+    const asOwner = async (name: string, place: string) =>
+      db.owner.query('update site set place = $2 where id = $1', [fleet.site(name).id, place]);
+    await asOwner(KESTREL, 'Upper Weirside');
+    await asOwner(CLINIC, 'Nether Edge');
+    const labels = async (q: string) => (await find(q)).filter((r) => r.kind === 'site').map((r) => r.label);
+    expect(await labels('WEIR')).toEqual([CLINIC, KESTREL]);
+    expect(await labels('upper weirside')).toEqual([KESTREL]);
+    // a name does not go on in the place
+    expect(await labels('school upper')).toEqual([]);
+    const a1 = (await find('nether a1')).filter((r) => r.kind === 'string');
+    expect(a1.length).toBeGreaterThan(0);
+    expect(a1.every((r) => r.where === CLINIC)).toBe(true);
+  });
+
   it('finds a string at every site, or at the site that is named before it', async () => {
     expect((await find('C2')).filter((r) => r.kind === 'string')).toMatchObject([
       { label: 'String C2', where: KESTREL },

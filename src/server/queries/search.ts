@@ -29,14 +29,13 @@ const STRINGS_NAMED = `(select strings_named(:name, :nameEnd, :looked) as id off
 const STRINGS_AT_SITE = `(
         select site.ref as site_ref, site.name as site, site.place, s.ref, s.name
         from string s join site on site.id = s.site_id
-        where ${SITE_VISIBLE} and upper(s.name) like upper(:last)
-          and (lower(site.name) like lower(:site) or lower(site.name) like '% ' || lower(:site))) x`;
+        where ${SITE_VISIBLE} and upper(s.name) like upper(:last) and site.beginnings like '% ' || lower(:site)) x`;
 
 /**
- * Sites by the beginning of any word of their name or place, strings by the beginning of theirs ("B3", or
- * "Kestrel B3" within a site), units by the beginning of their serial. Serials and names go by index in their order, looked
- * up until there are enough: written as bounds, since behind row-level security `like` may not choose rows (it is not
- * leakproof), and a short beginning would match every unit there is. Within a named site its strings are few.
+ * Sites by the beginning of any word of their name or place, strings by the beginning of theirs ("B3", or "Kestrel B3"
+ * within sites that are found so), units by the beginning of their serial. Serials and names of strings go by index in
+ * their order, looked up until there are enough: written as bounds, since behind row-level security `like` may not choose
+ * rows (it is not leakproof), and a short beginning would match every unit there is. Strings of a named site are few.
  */
 export async function search(tx: Tx, text: string, limit: number): Promise<SearchRow[]> {
   const words = text.split(/\s+/).filter(Boolean);
@@ -46,9 +45,7 @@ export async function search(tx: Tx, text: string, limit: number): Promise<Searc
     `(select 'site' as kind, site.ref as "siteRef", site.name as "siteName", site.place, null::uuid as "stringRef",
              null as "stringName", null as serial, null::int as position
       from site
-      where ${SITE_VISIBLE}
-        and (lower(site.name) like lower(:whole) or lower(site.name) like '% ' || lower(:whole)
-             or lower(site.place) like lower(:whole) or lower(site.place) like '% ' || lower(:whole))
+      where ${SITE_VISIBLE} and site.beginnings like '% ' || lower(:whole)
       order by lower(site.name) not like lower(:whole), site.name limit :limit)
      union all
      (select 'string', x.site_ref, x.site, x.place, x.ref, x.name, null, null
