@@ -1,5 +1,5 @@
 import { useQuery } from '@tanstack/react-query';
-import { useCallback, useMemo, useState } from 'react';
+import { useCallback, useDeferredValue, useMemo, useState } from 'react';
 import { CauseSheet } from '../../components/causes/CauseSheet';
 import { byGravity } from '../../components/causes/words';
 import { LiveHeading } from '../../components/ui/LiveHeading';
@@ -53,7 +53,9 @@ export const FleetBoard = unpacking(function FleetBoard({
 }: Props) {
   const client = queryClient();
   const initial = useMemo(() => received(came), [came]);
-  const { data: fleet, error, refetch } = useQuery(fleetQuery(initial), client);
+  const { data, error, refetch } = useQuery(fleetQuery(initial), client);
+  // what is typed and chosen shows at once, the lists follow
+  const fleet = useDeferredValue(data);
   const readAgain = useReadAgain(fleetKey);
   const status = useLive('fleet', (change, kind) => {
     client.setQueryData<FleetNow>(fleetKey, (old) =>
@@ -62,7 +64,8 @@ export const FleetBoard = unpacking(function FleetBoard({
     // a cause at a site whose telephone number or acknowledgement is not here yet
     if (kind === 'delta' && tellsOfCauses(change)) readAgain();
   });
-  const [view, changeView] = useViewInUrl(initialView, FLEET_DEFAULTS);
+  const [asked, changeView] = useViewInUrl(initialView, FLEET_DEFAULTS);
+  const view = useDeferredValue(asked);
   const [most, setMost] = useState(LINES_AT_ONCE);
   const [allCauses, setAllCauses] = useState(false);
   const partly = whole !== null && fleet.sites.length <= initial.sites.length ? whole : null;
@@ -153,7 +156,7 @@ export const FleetBoard = unpacking(function FleetBoard({
             </p>
           </div>
           <Sheet flush>
-            <FleetFilters view={view} onChange={change} />
+            <FleetFilters view={asked} onChange={change} />
             <FleetTable
               lines={lines.slice(0, most)}
               view={view}
