@@ -1,5 +1,5 @@
 import { useQuery } from '@tanstack/react-query';
-import { useCallback, useMemo } from 'react';
+import { useCallback, useDeferredValue, useMemo } from 'react';
 import { CauseSheet } from '../../components/causes/CauseSheet';
 import { byGravity } from '../../components/causes/words';
 import { Caution } from '../../components/ui/Caution';
@@ -68,7 +68,9 @@ export const SiteBoard = unpacking(function SiteBoard({
   const client = queryClient();
   const initial = useMemo(() => received(came), [came]);
   const { id, timeZone } = initial.site;
-  const { data: page, error, refetch } = useQuery(siteQuery(initial), client);
+  const { data, error, refetch } = useQuery(siteQuery(initial), client);
+  // what is typed and tapped shows at once, what came follows
+  const page = useDeferredValue(data);
   const start = useMemo(() => ({ kind: initialKind }), [initialKind]);
   const [{ kind }, setView] = useViewInUrl<{ kind: KindWanted }>(start, DEFAULTS);
   const onTaken = useCallback(

@@ -1,4 +1,4 @@
-import { memo, useMemo, useState } from 'react';
+import { memo, useDeferredValue, useMemo, useState } from 'react';
 import { StateTag } from '../../components/states/StateTag';
 import { LongTable } from '../../components/ui/LongTable';
 import { Notice } from '../../components/ui/Notice';
@@ -170,7 +170,9 @@ export const StringsSheet = memo(function StringsSheet({
     key: 'need',
     descending: false,
   });
-  const [wanted, setWanted] = useState('');
+  const [typed, setTyped] = useState('');
+  // the letter shows at once, the rows follow
+  const wanted = useDeferredValue(typed);
   const columns = useMemo(() => columnsFor(site), [site]);
   const shown = useMemo(() => {
     const q = wanted.trim().toLowerCase();
@@ -198,8 +200,8 @@ export const StringsSheet = memo(function StringsSheet({
         <SearchInput
           label={stringsSheet.filterStringsByName}
           placeholder={stringsSheet.filterByNameOr}
-          value={wanted}
-          onChange={setWanted}
+          value={typed}
+          onChange={setTyped}
           className="no-print mb-2 sm:w-[220px]"
         />
       )}

@@ -1,5 +1,5 @@
 import { QueryClientProvider, useQuery, useQueryClient } from '@tanstack/react-query';
-import { lazy, useCallback, useMemo, useState } from 'react';
+import { lazy, useCallback, useDeferredValue, useMemo, useState } from 'react';
 import type { ChartMark } from '../../components/charts/model';
 import { ButtonLink } from '../../components/ui/Button';
 import { Caution } from '../../components/ui/Caution';
@@ -86,7 +86,9 @@ function useStringLive(initial: StringPage) {
     // the judgement's evidence comes with the page, not by the wire
     if (tells(change, () => true)) void client.invalidateQueries({ queryKey: options.queryKey, exact: true });
   });
-  return { page: result.data, failed: result.isRefetchError ? result.error : null, status };
+  // what is typed and tapped shows at once, what came follows
+  const page = useDeferredValue(result.data);
+  return { page, failed: result.isRefetchError ? result.error : null, status };
 }
 
 /** The notes as marks on the time axis. */
