@@ -72,7 +72,9 @@ export const TraceSheet = memo(function TraceSheet({ siteId, stringId, timeZone 
     client,
   );
   useLive(stringId ? `string:${stringId}` : `site:${siteId}`, (change, kind) => {
-    if (kind === 'delta' && tells(change, (e) => e.kind === 'command'))
+    // commands of the time before it listened, or could not
+    if (kind === 'snapshot') void client.invalidateQueries({ queryKey: key });
+    else if (tells(change, (e) => e.kind === 'command'))
       // the first seconds of a trace follow the command
       for (const afterMs of [0, 2500, 5000, 10_000])
         setTimeout(() => void client.invalidateQueries({ queryKey: key }), afterMs);
