@@ -45,7 +45,7 @@ export function plantedAttacks(scene: () => Scene): void {
     const { rows } = await db.owner.query<{ t: string; c: string }>(
       `select c.relname as t, a.attname as c from pg_class c join pg_attribute a on a.attrelid = c.oid
        where c.relnamespace = 'public'::regnamespace and c.relkind = 'r' and not c.relispartition
-         and a.atttypid = 'text'::regtype and not a.attisdropped and c.relname !~ '^(knex|installation|session|rate)'`,
+         and a.atttypid = 'text'::regtype and a.attgenerated = '' and not a.attisdropped and c.relname !~ '^(knex|installation|session|rate)'`,
     );
     let planted = 0;
     for (const { t, c } of rows.filter((r) => !CODES.test(r.c)))
