@@ -1,5 +1,6 @@
+import { groupedBy } from '../domain/grouped-by';
 import { combGeometry, type Tooth } from './comb-geometry';
-import { CONDITION_WORDS, type Condition, type DrawnSlot } from './condition';
+import { CONDITION_WORDS, type DrawnSlot } from './condition';
 import { Hatch } from './Hatch';
 import { listed } from './numbers';
 import { SCREEN, type Paint } from './paint';
@@ -17,12 +18,10 @@ interface Props {
 
 /** "14 units: 12 passing; 5 and 9 stuck." */
 export function combInWords(slots: readonly DrawnSlot[], teeth: readonly Tooth[]): string {
-  const by = new Map<Condition, number[]>();
-  for (const t of teeth) by.set(t.condition, [...(by.get(t.condition) ?? []), t.position]);
-  const parts = [...by].map(([condition, at]) =>
-    condition === 'passing' || at.length === teeth.length || at.length > 8
-      ? `${at.length} ${CONDITION_WORDS[condition]}`
-      : `${listed(at)} ${CONDITION_WORDS[condition]}`,
+  const parts = [...groupedBy(teeth, (t) => t.condition)].map(([condition, alike]) =>
+    condition === 'passing' || alike.length === teeth.length || alike.length > 8
+      ? `${alike.length} ${CONDITION_WORDS[condition]}`
+      : `${listed(alike.map((t) => t.position))} ${CONDITION_WORDS[condition]}`,
   );
   return comb.slotsPositionsParts(slots.length, parts.join('; '));
 }

@@ -1,3 +1,4 @@
+import { groupedBy } from '../../domain/grouped-by';
 import { alternativesInWords } from '../../components/causes/words';
 import { Caution } from '../../components/ui/Caution';
 import { Sheet } from '../../components/ui/Sheet';
@@ -10,8 +11,7 @@ import { lossWords } from './words';
 import { causeCard } from '../../words/causes';
 
 function Units({ cause }: { cause: CausePage }) {
-  const strings = new Map<string, CausePage['units']>();
-  for (const u of cause.units) strings.set(u.stringId, [...(strings.get(u.stringId) ?? []), u]);
+  const strings = groupedBy(cause.units, (u) => u.stringId);
   return (
     <ul className="divide-y divide-rule-faint">
       {[...strings].map(([id, units]) => (

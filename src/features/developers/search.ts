@@ -1,3 +1,4 @@
+import { groupedBy } from '../../domain/grouped-by';
 import type { OperationShown } from '../../schemas/api/developers';
 
 const textOf = (o: OperationShown): string =>
@@ -28,7 +29,5 @@ export function operationsFound(operations: readonly OperationShown[], typed: st
 export function groupsOf(
   operations: readonly OperationShown[],
 ): { group: string; operations: OperationShown[] }[] {
-  const groups = new Map<string, OperationShown[]>();
-  for (const o of operations) groups.set(o.group, [...(groups.get(o.group) ?? []), o]);
-  return [...groups].map(([group, of]) => ({ group, operations: of }));
+  return [...groupedBy(operations, (o) => o.group)].map(([group, of]) => ({ group, operations: of }));
 }

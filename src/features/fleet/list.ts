@@ -1,4 +1,4 @@
-import { bySite } from '../../schemas/api/causes-on-the-way';
+import { groupedBy } from '../../domain/grouped-by';
 import type { FleetView } from '../../schemas/api/fleet';
 import type { CauseNow, SiteNow } from '../../schemas/api/now';
 import { asksForSomebody, concernedAt, needOf, urgency, type Need } from './need';
@@ -36,7 +36,7 @@ const grouped = new WeakMap<readonly CauseNow[], Map<string, CauseNow[]>>();
 function causesBySite(causes: readonly CauseNow[]): Map<string, CauseNow[]> {
   const known = grouped.get(causes);
   if (known) return known;
-  const made = bySite(causes);
+  const made = groupedBy(causes, (cause) => cause.siteId);
   grouped.set(causes, made);
   return made;
 }

@@ -1,3 +1,4 @@
+import { groupedBy } from '../../domain/grouped-by';
 import { byGravity, isHazard } from '../../components/causes/words';
 import type { CauseNow, CommandNow, SiteNow } from '../../schemas/api/now';
 import type { ShutdownView } from '../../schemas/api/shutdown';
@@ -32,16 +33,14 @@ function searched(cause: CauseNow, wanted: string): CauseNow | undefined {
 /** The causes that a view shows, gravest question first; questions without any are left out. */
 export function shutdownGroups(causes: readonly CauseNow[], view: ShutdownView): Group[] {
   const wanted = view.q.toLowerCase();
-  const groups = new Map<CauseNow['verdict'], CauseNow[]>();
-  for (const cause of [...causes].sort(byGravity)) {
-    if (view.show !== 'all' && cause.verdict !== view.show) continue;
-    const shown = searched(cause, wanted);
-    if (!shown) continue;
-    const list = groups.get(cause.verdict);
-    if (list) list.push(shown);
-    else groups.set(cause.verdict, [shown]);
-  }
-  return [...groups].map(([verdict, list]) => ({ verdict, causes: list.sort(oldestFirst) }));
+  const shown = [...causes].sort(byGravity).flatMap((cause) => {
+    if (view.show !== 'all' && cause.verdict !== view.show) return [];
+    return searched(cause, wanted) ?? [];
+  });
+  return [...groupedBy(shown, (cause) => cause.verdict)].map(([verdict, list]) => ({
+    verdict,
+    causes: list.sort(oldestFirst),
+  }));
 }
 
 /** A site with something other than a release in force. */

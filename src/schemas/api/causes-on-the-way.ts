@@ -24,17 +24,6 @@ export const receivedCause = ({ strings, ...cause }: CauseSent): CauseNow => ({
   ),
 });
 
-/** Causes by their site, in their order. */
-export function bySite<C extends { siteId: string }>(causes: readonly C[]): Map<string, C[]> {
-  const sites = new Map<string, C[]>();
-  for (const cause of causes) {
-    const list = sites.get(cause.siteId);
-    if (list) list.push(cause);
-    else sites.set(cause.siteId, [cause]);
-  }
-  return sites;
-}
-
 /** Something with causes, as it is sent. */
 export type Sent<T extends { causes: CauseNow[] }> = Omit<T, 'causes'> & { causes: CauseSent[] };
 

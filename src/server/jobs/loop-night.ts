@@ -1,4 +1,5 @@
 import { setImmediate as turn } from 'node:timers/promises';
+import { groupedBy } from '../../domain/grouped-by';
 import type { FoundCause } from '../../domain/causes/changes';
 import { conductorsOhm, loopSamples } from '../../domain/output/loop-samples';
 import { median } from '../../domain/output/robust';
@@ -111,9 +112,7 @@ async function readSamples(
   };
   const samples = new Map<number, LoopSample[]>();
   // strings of one input are read together: each needs the others' currents
-  const byInput = new Map<number, NightString[]>();
-  for (const n of series.strings)
-    byInput.set(n.string.inputId, [...(byInput.get(n.string.inputId) ?? []), n]);
+  const byInput = groupedBy(series.strings, (n) => n.string.inputId);
   const wanted = [...byInput.values()].filter((group) => group.some((n) => loops.includes(n)));
   for (let i = 0; i < wanted.length;) {
     const some: NightString[] = [];
@@ -126,12 +125,7 @@ async function readSamples(
         site.reportIntervalS / 2,
       ),
     );
-    const byString = new Map<number, LoopRow[]>();
-    for (const r of rows) {
-      const own = byString.get(r.stringId);
-      if (own) own.push(r);
-      else byString.set(r.stringId, [r]);
-    }
+    const byString = groupedBy(rows, (r) => r.stringId);
     for (const n of some) {
       const others = (byInput.get(n.string.inputId) ?? []).filter((o) => o !== n);
       samples.set(

@@ -1,4 +1,5 @@
 import { setImmediate as turn } from 'node:timers/promises';
+import { groupedBy } from '../../domain/grouped-by';
 import { EXCLUDED, type PlaneSeries, type StringSeries } from '../../domain/output/plane-reference';
 import { median } from '../../domain/output/robust';
 import { solarPositionQuick } from '../../domain/photovoltaics/sun/position-quick';
@@ -133,9 +134,10 @@ export async function readNightSeries(
       const power = energy.get(string.id)!;
       return [[seriesOf(string, 'string', { voltage, current: n.typicalA, power }, n.excluded), [string]]];
     });
-    const silent = new Map<number, OutputString[]>();
-    for (const s of here.filter((x) => x.kind === 'shutdown_only'))
-      silent.set(s.inputId, [...(silent.get(s.inputId) ?? []), s]);
+    const silent = groupedBy(
+      here.filter((s) => s.kind === 'shutdown_only'),
+      (s) => s.inputId,
+    );
     const shared = [...silent].flatMap(([inputId, members]): [StringSeries, OutputString[]][] => {
       const columns = inputs.get(inputId);
       const whole = strings.filter((s) => s.inputId === inputId).length === members.length;
@@ -314,8 +316,7 @@ async function exclusions(
   stepOf: (atS: number) => number,
 ): Promise<Map<number, Uint8Array>> {
   const bits = new Map(strings.map((s) => [s.id, new Uint8Array(steps)]));
-  const byInverter = new Map<number, OutputString[]>();
-  for (const s of strings) byInverter.set(s.inverterId, [...(byInverter.get(s.inverterId) ?? []), s]);
+  const byInverter = groupedBy(strings, (s) => s.inverterId);
   for (const row of await inverterQuarters(tx, siteId, span)) {
     const bit =
       (row.curtailed ? EXCLUDED.curtailed : 0) |

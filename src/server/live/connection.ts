@@ -1,6 +1,6 @@
 import type { WebSocket } from 'ws';
+import { groupedBy } from '../../domain/grouped-by';
 import type { Actor } from '../../domain/access/permissions';
-import { bySite } from '../../schemas/api/causes-on-the-way';
 import {
   CLOSE_COME_BACK,
   clientMessage,
@@ -32,7 +32,8 @@ export class Subscription implements Listening {
   ) {
     this.causes = JSON.stringify(causes);
     if (subject.kind === 'fleet')
-      for (const [site, list] of bySite(causes)) this.causesAt.set(site, JSON.stringify(list));
+      for (const [site, list] of groupedBy(causes, (cause) => cause.siteId))
+        this.causesAt.set(site, JSON.stringify(list));
   }
 }
 

@@ -1,3 +1,4 @@
+import { groupedBy } from '../../domain/grouped-by';
 import type { DayLight, DaySums } from '../../domain/output/day-figures';
 import type { TariffFrom } from '../../domain/output/tariff';
 import type { Tx } from '../db/transaction';
@@ -193,9 +194,7 @@ export async function tariffsOf(tx: Tx, siteIds: readonly number[]): Promise<Map
      from tariff t join person p on p.id = t.created_by where t.site_id = any (:siteIds) order by t.from_on desc`,
     { siteIds: [...siteIds] },
   );
-  const bySite = new Map<number, TariffRow[]>();
-  for (const { siteId, ...row } of rows) bySite.set(siteId, [...(bySite.get(siteId) ?? []), row]);
-  return bySite;
+  return groupedBy(rows, (row) => row.siteId);
 }
 
 /** Prices by the public identifiers of sites that the actor sees; newest first. */
@@ -206,9 +205,7 @@ export async function tariffsByRef(tx: Tx, siteRefs: readonly string[]): Promise
      where site.ref = any (:siteRefs::uuid[]) and ${SITE_VISIBLE} order by t.from_on desc`,
     { siteRefs: [...siteRefs] },
   );
-  const bySite = new Map<string, TariffFrom[]>();
-  for (const { siteRef, ...row } of rows) bySite.set(siteRef, [...(bySite.get(siteRef) ?? []), row]);
-  return bySite;
+  return groupedBy(rows, (row) => row.siteRef);
 }
 
 /** @returns false where a price from that day is there already */

@@ -1,4 +1,5 @@
 import type pg from 'pg';
+import { groupedBy } from '../../domain/grouped-by';
 import { VALUE_COLUMNS as COLUMNS, type ValueColumn as Column } from './frames';
 import { copyFrames } from './copy-frames';
 import { FRAMES_AS_ROWS, NEXT_PARAMETER, frameParameters, int4Array } from './frame-parameters';
@@ -160,13 +161,7 @@ export async function writeFrames(
 
 /** Frames by string and time, none of them there yet. */
 async function writeNew(client: pg.ClientBase, rows: readonly FrameRow[], dirtyBefore: Date): Promise<void> {
-  const days = new Map<number, FrameRow[]>();
-  for (const row of rows) {
-    const day = Math.floor(row.at / DAY_S);
-    const list = days.get(day);
-    if (list) list.push(row);
-    else days.set(day, [row]);
-  }
+  const days = groupedBy(rows, (row) => Math.floor(row.at / DAY_S));
   await client.query('begin');
   try {
     for (const [day, ofDay] of days) {

@@ -1,4 +1,5 @@
 import type { Knex } from 'knex';
+import { groupedBy } from '../../domain/grouped-by';
 import { config } from '../config';
 import { oneString, packedFrames } from './frames';
 import type pg from 'pg';
@@ -109,13 +110,7 @@ export async function inputsOf(db: Knex, siteIds: readonly number[]): Promise<Ma
      from input_state where site_id = any (?)`,
     [[...siteIds]],
   );
-  const sites = new Map<number, InputRead[]>();
-  for (const { siteId, ...input } of rows) {
-    const list = sites.get(siteId);
-    if (list) list.push(input);
-    else sites.set(siteId, [input]);
-  }
-  return sites;
+  return groupedBy(rows, (input) => input.siteId);
 }
 
 /** The coldest air (°C) that a site's sensors report now; null: none does. */

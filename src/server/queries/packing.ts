@@ -1,6 +1,7 @@
 import type pg from 'pg';
 import { to as copyTo } from 'pg-copy-streams';
 import { z } from 'zod';
+import { groupedBy } from '../../domain/grouped-by';
 import { packedFrames, singleFrames, VALUE_COLUMNS, type FramesWanted, type ValueColumn } from './frames';
 import { NONE, packValues, type PackedValues } from './packed-values';
 
@@ -209,14 +210,10 @@ export async function packedDays(
 
 /** Frames that are alike, string by string; each in the order that it came in. */
 export function gather(frames: readonly FrameInDay[]): StringDay[] {
-  const alike = new Map<string, FrameInDay[]>();
-  for (const f of frames) {
+  const alike = groupedBy(frames, (f) => {
     const slots = f.values.state?.length ?? 0;
-    const key = `${f.stringId} ${slots} ${f.values.voltage_in === null} ${f.values.power === null}`;
-    const list = alike.get(key);
-    if (list) list.push(f);
-    else alike.set(key, [f]);
-  }
+    return `${f.stringId} ${slots} ${f.values.voltage_in === null} ${f.values.power === null}`;
+  });
   return [...alike.values()].map((list) => {
     const [first] = list as [FrameInDay];
     const slots = first.values.state?.length ?? 0;

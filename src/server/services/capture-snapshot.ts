@@ -1,4 +1,5 @@
 import { createHash } from 'node:crypto';
+import { groupedBy } from '../../domain/grouped-by';
 import { signedRecords } from '../../domain/commissioning/checks/sign-off';
 import type { CheckRecord } from '../../schemas/api/checks';
 import type { CaptureSnapshot } from '../../schemas/api/capture';
@@ -27,15 +28,6 @@ export const checksFingerprint = (records: readonly CheckRecord[]): string =>
     })),
   );
 
-function groupedBy<T extends { stringId: string }>(rows: readonly T[]): Map<string, T[]> {
-  const groups = new Map<string, T[]>();
-  for (const row of rows) {
-    const group = groups.get(row.stringId);
-    if (group) group.push(row);
-    else groups.set(row.stringId, [row]);
-  }
-  return groups;
-}
 const without = <T extends { stringId: string }>({ stringId: _, ...rest }: T): Omit<T, 'stringId'> => rest;
 
 /**
@@ -49,8 +41,8 @@ export async function captureSnapshot(
   now: Date,
 ): Promise<CaptureSnapshot> {
   const site = found(await visibleSite(tx, siteRef), 'site');
-  const checks = groupedBy((await latestChecks(tx, site.id)).map(checkOut));
-  const readings = groupedBy((await latestReadings(tx, site.id)).map(readingOut));
+  const checks = groupedBy((await latestChecks(tx, site.id)).map(checkOut), (r) => r.stringId);
+  const readings = groupedBy((await latestReadings(tx, site.id)).map(readingOut), (r) => r.stringId);
   const signs = new Map((await latestSignOffs(tx, site.id)).map((s) => [s.stringId, s]));
   const strings = (await stringSheets(tx, site.id, now)).map(({ dbId: _, ...string }) => {
     const records = checks.get(string.id) ?? [];

@@ -1,3 +1,4 @@
+import { groupedBy } from '../../domain/grouped-by';
 import { causesOf } from '../../domain/causes/causes';
 import type { Cause, SiteCondition, SlotCondition } from '../../domain/causes/site';
 import { UNIT_STATES, VERDICTS } from '../../domain/verdicts/codes';
@@ -85,13 +86,9 @@ export function conditionOf(row: CauseSiteRow, at: Date): SiteCondition {
  * shared part stays as it is.
  */
 export function together(causes: readonly Cause[]): Cause[] {
-  const out: Cause[] = [];
-  const alone = new Map<Cause['verdict'], Cause[]>();
-  for (const cause of causes) {
-    if (cause.sharedPart?.kind !== 'unit') out.push(cause);
-    else alone.set(cause.verdict, [...(alone.get(cause.verdict) ?? []), cause]);
-  }
-  for (const [verdict, singles] of alone) {
+  const isAlone = (cause: Cause): boolean => cause.sharedPart?.kind === 'unit';
+  const out = causes.filter((cause) => !isAlone(cause));
+  for (const [verdict, singles] of groupedBy(causes.filter(isAlone), (cause) => cause.verdict)) {
     const first = singles[0];
     if (!first) continue;
     if (singles.length === 1) {

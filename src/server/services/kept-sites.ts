@@ -1,4 +1,4 @@
-import { bySite } from '../../schemas/api/causes-on-the-way';
+import { groupedBy } from '../../domain/grouped-by';
 import type { CauseNow, SiteNow } from '../../schemas/api/now';
 import { asIngest, type Tx } from '../db/transaction';
 import { sitesNow } from '../queries/sites-now';
@@ -125,7 +125,7 @@ const inOrder = (siteIds: readonly number[], found: ReadonlyMap<number, SiteStan
 async function readSites(tx: Tx, at: Date, siteIds: readonly number[]): Promise<Map<number, SiteStanding>> {
   if (siteIds.length === 0) return new Map();
   const sites = new Map((await sitesNow(tx, at, siteIds)).map((site) => [site.id, site]));
-  const causes = bySite(await causesNow(tx, at, siteIds));
+  const causes = groupedBy(await causesNow(tx, at, siteIds), (cause) => cause.siteId);
   return new Map(
     (await siteRefs(tx, siteIds)).flatMap(({ id, ref }) => {
       const site = sites.get(ref);

@@ -1,3 +1,4 @@
+import { groupedBy } from '../../domain/grouped-by';
 import { median } from '../../domain/output/robust';
 import { sunRiseSet } from '../../domain/photovoltaics/sun/rise-set';
 import { commandWords } from '../../domain/verdicts/command-words';
@@ -114,9 +115,7 @@ const MANY_MOVES = 4;
 
 function moveMarks(moves: readonly Move[]): ChartMark[] {
   const replaced = moves.filter((m) => m.out !== null);
-  const groups = new Map<number, Move[]>();
-  for (const m of replaced) groups.set(m.at, [...(groups.get(m.at) ?? []), m]);
-  return [...groups].map(([at, together]) => ({
+  return [...groupedBy(replaced, (m) => m.at)].map(([at, together]) => ({
     from: at,
     to: null,
     words:

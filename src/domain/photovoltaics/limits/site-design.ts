@@ -1,5 +1,6 @@
+import { groupedBy } from '../../grouped-by';
 import { connectorFindings } from './connector-design';
-import { currentsOf, modulesOf, type BuiltSite, type BuiltString } from './built-site';
+import { currentsOf, modulesOf, type BuiltSite } from './built-site';
 import type { StringDesign } from './design';
 import { DESIGN_CHECKS, type DesignFinding, type DesignOutcome } from './design-finding';
 import { sharingFindings } from './input-design';
@@ -42,12 +43,7 @@ function grouped(findings: readonly { string: StringName; finding: DesignFinding
  */
 export function checkSiteDesign(site: BuiltSite): SiteDesignFinding[] {
   const strings = site.strings.filter((s) => s.slots.length > 0);
-  const onInput = new Map<string, BuiltString[]>();
-  for (const string of strings) {
-    const others = onInput.get(string.input.id);
-    if (others) others.push(string);
-    else onInput.set(string.input.id, [string]);
-  }
+  const onInput = groupedBy(strings, (string) => string.input.id);
   const all: { string: StringName; finding: DesignFinding }[] = [];
   for (const string of strings) {
     const name = { id: string.id, name: string.name };

@@ -1,3 +1,4 @@
+import { groupedBy } from '../../../domain/grouped-by';
 import { CHECKS } from '../../../domain/commissioning/checks/list';
 import type { CheckDefinition } from '../../../domain/commissioning/checks/definition';
 import { number, quantity, volts } from '../../../drawings/numbers';
@@ -58,11 +59,7 @@ const ORDER = ['positive_to_negative', 'positive_to_earth', 'negative_to_earth']
 function readings(paper: Paper, data: PackData): void {
   paper.heading(papersHandoverResults.polarityAndOpenCircuit, 2);
   paper.text(papersHandoverResults.voltsAtTheHome, { size: 8.5, colour: PAPER.ink2 });
-  const groups = new Map<string, PackData['readings']>();
-  for (const r of data.readings) {
-    const key = `${r.string}\n${r.stage}`;
-    groups.set(key, [...(groups.get(key) ?? []), r]);
-  }
+  const groups = groupedBy(data.readings, (r) => `${r.string}\n${r.stage}`);
   paper.table(
     [
       { header: papersHandoverResults.string, share: 1.1 },
