@@ -178,6 +178,10 @@ describe('the history of a string', () => {
     expect(low).toBeLessThan(14 * 39);
     expect(high).toBeGreaterThan(14 * 39);
     expect(h.expected.from).toContain('other strings on the south roof');
+    // siblings in steps of five minutes, each at the middle of its reports: the site has one every ten seconds
+    expect([...new Set([...h.middle.at, ...h.expected.at].map((at) => at % 300))]).toEqual([145]);
+    expect(h.middle.at.length).toBeGreaterThan(15);
+    expect(h.middle.at.length).toBeLessThan(26);
     expect(h.marks.map((m) => [m.words, m.tone, m.to === null])).toEqual([
       ['Shutdown by the initiator', 'plum', false],
       ['Positions 5 and 9 are stuck in shutdown', 'rust', true],

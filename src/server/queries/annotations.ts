@@ -103,7 +103,7 @@ export async function setAnnotationRemoved(
 export async function worksOfString(
   tx: Tx,
   string: { id: number; siteId: number },
-  window: { from: Date; to: Date },
+  { from, to }: { from: Date; to: Date },
 ): Promise<{ from: number; to: number; reason: string }[]> {
   const { rows } = await tx.raw<{ rows: { from: number; to: number; reason: string }[] }>(
     `select extract(epoch from starts_at)::float8 as "from", extract(epoch from ends_at)::float8 as "to", reason
@@ -111,7 +111,7 @@ export async function worksOfString(
      where site_id = :siteId and starts_at < :to and ends_at > :from
        and (string_ids is null or string_ids @> array[:id::int4])
      order by starts_at`,
-    { id: string.id, siteId: string.siteId, ...window },
+    { id: string.id, siteId: string.siteId, from, to },
   );
   return rows;
 }

@@ -39,7 +39,7 @@ const seriesOf = (of: ImportedOf): { where: string; id: number } =>
 export async function importedSteps(
   tx: Tx,
   of: ImportedOf,
-  window: { from: Date; to: Date },
+  { from, to }: { from: Date; to: Date },
   quantity: ImportedQuantity,
   stepS: number,
 ): Promise<ImportedPoint[]> {
@@ -53,7 +53,7 @@ export async function importedSteps(
            from history_series s join history_reading r on r.series_id = s.id
            where ${where} and r.at >= :from and r.at < :to group by 1, s.id) x
      order by step, series desc`,
-    { id, stepS: Math.max(900, stepS), ...window },
+    { id, stepS: Math.max(900, stepS), from, to },
   );
   return rows;
 }
@@ -62,7 +62,7 @@ export async function importedSteps(
 export async function importedDays(
   tx: Tx,
   of: ImportedOf,
-  window: { from: Date; to: Date },
+  { from, to }: { from: Date; to: Date },
   quantity: ImportedQuantity,
   timeZone: string,
 ): Promise<ImportedPoint[]> {
@@ -83,7 +83,7 @@ export async function importedDays(
      where ${where} and d.day >= (cast(:from as timestamptz) at time zone :timeZone)::date
        and d.day <= (cast(:to as timestamptz) at time zone :timeZone)::date
      order by d.day, s.id desc`,
-    { id, timeZone, ...window },
+    { id, timeZone, from, to },
   );
   return rows;
 }
@@ -122,7 +122,7 @@ export function whereNothingElse(
 export async function importedUnits(
   tx: Tx,
   stringId: number,
-  window: { from: Date; to: Date },
+  { from, to }: { from: Date; to: Date },
   quantity: ImportedQuantity | 'temperature',
   stepS: number,
   slots: number,
@@ -136,7 +136,7 @@ export async function importedUnits(
            where s.string_id = :stringId and s.position between 1 and :slots and r.at >= :from and r.at < :to
            group by 1, 2, 3) x
      order by step, position, series desc`,
-    { stringId, stepS, slots, ...window },
+    { stringId, stepS, slots, from, to },
   );
   const out: { at: number; values: (number | null)[] }[] = [];
   for (const { at, position, value: v } of rows) {

@@ -57,7 +57,7 @@ const OF_QUARTER: Record<Quantity, { value: string; low: string; high: string }>
 export async function stringMinutes(
   tx: Tx,
   stringId: number,
-  window: Window,
+  { from, to }: Window,
   stepS: number,
   quantity: Quantity,
 ): Promise<HistoryPoint[]> {
@@ -69,7 +69,7 @@ export async function stringMinutes(
                   ${value} as v, power_sum
            from ${framesOf({ columns: FRAME_COLUMNS[quantity], strings: oneString(':stringId'), ...SPAN })} r) f
      where v is not null group by step order by step`,
-    { stringId, stepS, ...window },
+    { stringId, stepS, from, to },
   );
   return rows;
 }
@@ -77,7 +77,7 @@ export async function stringMinutes(
 export async function stringQuarters(
   tx: Tx,
   stringId: number,
-  window: Window,
+  { from, to }: Window,
   quantity: Quantity,
 ): Promise<HistoryPoint[]> {
   const of = OF_QUARTER[quantity];
@@ -87,7 +87,7 @@ export async function stringQuarters(
                   energy / 600.0::float8 as energy
            from string_quarter where string_id = :stringId and at >= :from and at < :to) q
      where v is not null order by at`,
-    { stringId, ...window },
+    { stringId, from, to },
   );
   return rows;
 }
@@ -96,7 +96,7 @@ export async function stringQuarters(
 export async function stringDays(
   tx: Tx,
   stringId: number,
-  window: Window,
+  { from, to }: Window,
   timeZone: string,
   quantity: 'voltage' | 'power',
 ): Promise<HistoryPoint[]> {
@@ -111,7 +111,7 @@ export async function stringDays(
      where string_id = :stringId and day >= (:from::timestamptz at time zone :timeZone)::date
        and day <= (:to::timestamptz at time zone :timeZone)::date
      order by day`,
-    { stringId, timeZone, ...window },
+    { stringId, timeZone, from, to },
   );
   return rows;
 }
@@ -126,7 +126,7 @@ const OF_INPUT: Record<Quantity, string> = {
 export async function inputHistory(
   tx: Tx,
   inputId: number,
-  window: Window,
+  { from, to }: Window,
   stepS: number,
   quantity: Quantity,
 ): Promise<HistoryPoint[]> {
@@ -137,7 +137,7 @@ export async function inputHistory(
                   ${OF_INPUT[quantity]} as v
            from input_frame where input_id = :inputId and at >= :from and at < :to) f
      where v is not null group by step order by step`,
-    { inputId, stepS, ...window },
+    { inputId, stepS, from, to },
   );
   return rows;
 }
@@ -146,7 +146,7 @@ export async function inputHistory(
 export async function inputDays(
   tx: Tx,
   inputId: number,
-  window: Window,
+  { from, to }: Window,
   timeZone: string,
   quantity: Quantity,
 ): Promise<HistoryPoint[]> {
@@ -160,7 +160,7 @@ export async function inputDays(
                  where input_id = :inputId and at >= :from and at < :to) f
            where v is not null group by day, date_bin('15 min', at, timestamptz '2000-01-01 00:00Z')) q
      group by day order by day`,
-    { inputId, timeZone, ...window },
+    { inputId, timeZone, from, to },
   );
   return rows;
 }
@@ -207,7 +207,7 @@ export interface SiblingStep {
 
 const siblingParameters = (
   siblings: readonly { id: number; units: number }[],
-  window: Window,
+  { from, to }: Window,
   { stepS, timeZone, passingFrom }: SiblingOptions,
 ) => ({
   ids: siblings.map((s) => s.id),
@@ -215,7 +215,8 @@ const siblingParameters = (
   stepS,
   timeZone,
   passingFrom,
-  ...window,
+  from,
+  to,
 });
 
 /**
@@ -263,7 +264,7 @@ export async function siblingLines(
 export async function planeLight(
   tx: Tx,
   planeId: number,
-  window: Window,
+  { from, to }: Window,
   stepS: number,
 ): Promise<{ at: number; poaGlobal: number; temperatureModule: number | null }[]> {
   const { rows } = await tx.raw<{
@@ -275,7 +276,7 @@ export async function planeLight(
      where n.plane_id = :planeId and n.kind = 'poa_global' and f.irradiance is not null
        and f.at >= :from and f.at < :to
      group by 1 order by 1`,
-    { planeId, stepS, ...window },
+    { planeId, stepS, from, to },
   );
   return rows;
 }
@@ -285,7 +286,7 @@ export async function energyAgainst(
   tx: Tx,
   stringId: number,
   siblingIds: readonly number[],
-  window: Window,
+  { from, to }: Window,
 ): Promise<{ stringId: number; wh: number; reports: number }[]> {
   const { rows } = await tx.raw<{ rows: { stringId: number; wh: number; reports: number }[] }>(
     `with spaced as (
@@ -296,7 +297,7 @@ export async function energyAgainst(
      select string_id as "stringId", coalesce(sum(power_sum / 10.0 * seconds / 3600), 0)::float8 as wh,
             count(*)::int as reports
      from spaced group by string_id`,
-    { ids: [stringId, ...siblingIds], ...window },
+    { ids: [stringId, ...siblingIds], from, to },
   );
   return rows;
 }
@@ -305,7 +306,7 @@ export async function energyAgainst(
 export async function eventsOfString(
   tx: Tx,
   string: { id: number; siteId: number },
-  window: Window,
+  { from, to }: Window,
   limit: number,
 ): Promise<EventItem[]> {
   const { rows } = await tx.raw<{
@@ -321,7 +322,7 @@ export async function eventsOfString(
             'logger_lost', 'gateway_silent', 'gateway_back', 'roll_call_started', 'roll_call_stopped', 'roster_changed')))
        and not exists (select from event later where later.supersedes = e.id)
      order by e.at desc, e.id desc limit :limit`,
-    { id: string.id, siteId: string.siteId, limit, ...window },
+    { id: string.id, siteId: string.siteId, limit, from, to },
   );
   return rows.map((r) => ({ ...r, at: r.at.toISOString(), recordedAt: r.recordedAt.toISOString() }));
 }
@@ -330,13 +331,13 @@ export async function eventsOfString(
 export async function commandsOfZone(
   tx: Tx,
   zoneId: number,
-  window: Window,
+  { from, to }: Window,
 ): Promise<{ since: Date; inForce: InForce }[]> {
   const { rows } = await tx.raw<{ rows: { since: Date; inForce: InForce }[] }>(
     `select since, in_force as "inForce" from command where zone_id = :zoneId and since < :to
        and since >= coalesce((select max(since) from command where zone_id = :zoneId and since <= :from), '-infinity')
      order by since`,
-    { zoneId, ...window },
+    { zoneId, from, to },
   );
   return rows;
 }

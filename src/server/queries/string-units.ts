@@ -31,14 +31,14 @@ const reportsOf = (column: UnitColumn): string =>
 export async function unitMinutes(
   tx: Tx,
   stringId: number,
-  window: Window,
+  { from, to }: Window,
   column: UnitColumn,
 ): Promise<{ at: number; values: (number | null)[] | null }[]> {
   const [name, scale] = UNIT_COLUMNS[column];
   const { rows } = await tx.raw<{ rows: { at: number; values: (number | null)[] | null }[] }>(
     `select extract(epoch from at)::int8 as at, to_json(${name}) as values
      from ${reportsOf(column)} f order by at`,
-    { stringId, ...window },
+    { stringId, from, to },
   );
   for (const row of rows) row.values = row.values?.map((v) => (v === null ? null : v / scale)) ?? null;
   return rows;
@@ -56,14 +56,14 @@ const QUARTER_COLUMNS: Record<UnitColumn, [string, number] | null> = {
 export async function unitQuarters(
   tx: Tx,
   stringId: number,
-  window: Window,
+  { from, to }: Window,
   column: UnitColumn,
 ): Promise<{ at: number; values: (number | null)[] | null }[]> {
   const [name, scale] = QUARTER_COLUMNS[column] ?? ['unit_voltage', 100];
   const { rows } = await tx.raw<{ rows: { at: number; values: (number | null)[] | null }[] }>(
     `select extract(epoch from at)::int8 + 450 as at, to_json(${name}) as values
      from string_quarter where string_id = :stringId and at >= :from and at < :to order by at`,
-    { stringId, ...window },
+    { stringId, from, to },
   );
   for (const row of rows) row.values = row.values?.map((v) => (v === null ? null : v / scale)) ?? null;
   return rows;
@@ -78,14 +78,14 @@ export interface Stay {
 }
 
 /** Which unit sat at which position in a time, oldest first. */
-export async function staysOf(tx: Tx, stringId: number, window: Window): Promise<Stay[]> {
+export async function staysOf(tx: Tx, stringId: number, { from, to }: Window): Promise<Stay[]> {
   const { rows } = await tx.raw<{ rows: Stay[] }>(
     `select sl.position, u.serial, extract(epoch from p.placed_from)::float8 as "from",
             extract(epoch from p.placed_to)::float8 as "to"
      from slot sl join placement p on p.slot_id = sl.id join unit u on u.id = p.unit_id
      where sl.string_id = :stringId and p.placed_from < :to and (p.placed_to is null or p.placed_to > :from)
      order by sl.position, p.placed_from`,
-    { stringId, ...window },
+    { stringId, from, to },
   );
   return rows;
 }
@@ -157,7 +157,7 @@ export async function inputAt(
 export async function unitSteps(
   tx: Tx,
   stringId: number,
-  window: Window,
+  { from, to }: Window,
   column: UnitColumn,
   stepS: number,
 ): Promise<{ at: number; values: (number | null)[] }[]> {
@@ -168,7 +168,7 @@ export async function unitSteps(
                   (avg(u.v) / ${scale})::float8 as v
            from ${reportsOf(column)} f cross join lateral unnest(${name}) with ordinality u(v, o) group by 1, 2) s
      group by step order by step`,
-    { stringId, stepS, ...window },
+    { stringId, stepS, from, to },
   );
   return rows;
 }

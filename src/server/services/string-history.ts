@@ -105,6 +105,9 @@ const FROM_WORDS: Record<ExpectedHistory['from'], (facts: StringFacts, model: st
   nothing: () => '',
 };
 
+/** What others gave is told in steps no finer, s: their middle of single reports says no more, and costs a page more. */
+const COMPARED_FROM_S = 300;
+
 interface Compared {
   expected: StringHistory['expected'];
   middle: StringHistory['middle'];
@@ -119,8 +122,9 @@ async function comparedWith(
   siblings: readonly Sibling[],
 ): Promise<Compared> {
   const { quantity } = query;
-  const stepS = plan.resolution === 'minute' ? Math.max(300, plan.stepS) : plan.stepS;
-  const offset = plan.resolution === 'quarter' ? 450 : 0;
+  const stepS = plan.resolution === 'minute' ? Math.max(COMPARED_FROM_S, plan.stepS) : plan.stepS;
+  // to the middle of what a step holds: reports at its beginning and every so often after it, or a quarter's mean
+  const offset = { minute: (stepS - facts.reportIntervalS) / 2, quarter: 450, day: 0 }[plan.resolution];
   const options = { resolution: plan.resolution, stepS, timeZone: facts.timeZone, quantity };
   const nothing = plan.resolution === 'day' && quantity === 'current';
   const steps = nothing
