@@ -10,15 +10,24 @@ import { inTime } from './server/http/in-time';
 import { sameOrigin } from './server/http/origin';
 import { justWrittenCookie } from './server/http/just-written';
 import { asReader } from './server/http/reader';
-import { problem } from './server/http/problem';
+import { explain, problem } from './server/http/problem';
+import { log } from './server/log';
 import { currentRequest, inRequest } from './server/request';
-import { doorRefusals } from './words/refusals';
+import { doorRefusals, pageRefusals } from './words/refusals';
 
 /** Who somebody is takes a database milliseconds; without an answer the page says that there is none. */
 const SIGNED_IN_WITHIN_MS = 12_000;
 const SAFE = new Set(['GET', 'HEAD', 'OPTIONS']);
 /** Addresses that are secrets and only read: the router would write one into its log that is asked for otherwise. */
 const SECRET_AND_READ = /^\/(api\/)?shared\//;
+
+/** What the router answers itself below /api is a page for people: programs get the document that they know. */
+const asProblem = (response: Response, { url, locals }: APIContext): Response =>
+  response.status === 404 &&
+  url.pathname.startsWith('/api/') &&
+  !response.headers.get('content-type')?.includes('json')
+    ? problem(new AppError('not_found', { message: doorRefusals.noSuchCall }), locals.requestId)
+    : response;
 
 /** What every answer says, refusals of this file included, unless it says so itself. */
 function finish(response: Response, locals: App.Locals): Response {
@@ -74,14 +83,16 @@ async function answer(context: APIContext, next: MiddlewareNext): Promise<Respon
     }
   } catch (error) {
     if (context.url.pathname.startsWith('/api/')) return finish(problem(error, locals.requestId), locals);
+    const away = explain(error) !== undefined;
+    if (!away) log.error({ error }, 'who somebody is could not be read');
     locals.problem = {
-      status: 503,
-      title: doorRefusals.notReachable,
-      message: doorRefusals.databaseAway,
+      status: away ? 503 : 500,
+      title: away ? doorRefusals.notReachable : pageRefusals.failedHere,
+      message: away ? doorRefusals.databaseAway : pageRefusals.tryAgain(locals.requestId),
     };
     return finish(await context.rewrite('/problem'), locals);
   }
-  const response = finish(await asReader(units, next), locals);
+  const response = finish(asProblem(await asReader(units, next), context), locals);
   // what the answer says of a cookie itself, a new session above all, is the last word
   const said = new Set(response.headers.getSetCookie().map(cookieName));
   for (const cookie of cookies)

@@ -15,14 +15,20 @@ export const SLOTS_MAX = 63;
 
 const seq = z.int().min(0);
 const epoch = z.int().min(1_500_000_000).max(4_102_444_800);
+/** The database keeps no NUL, and a name has no use for other control characters. */
+const text = (max: number) =>
+  z
+    .string()
+    .max(max)
+    .regex(/^\P{Cc}*$/u, 'has a control character');
 const serial = z.string().regex(/^[A-Z0-9][A-Z0-9-]{3,31}$/);
 
 // ---- from the logger ----
 export const hello = z.strictObject({
   type: z.literal('hello'),
   protocol: z.int(),
-  logger: z.string().max(64),
-  firmware: z.string().max(64),
+  logger: text(64),
+  firmware: text(64),
   clock: epoch,
 });
 
@@ -78,7 +84,7 @@ export const inputs = z.strictObject({
   type: z.literal('inputs'),
   seq,
   rows: rows({
-    inverter: z.string().max(64), // its name in the roster
+    inverter: text(64), // its name in the roster
     input: z.int().min(1).max(64),
     voltage: z.int().min(-20_000).max(20_000).nullable(), // dV
     current: z.int().min(-10_000).max(60_000).nullable(), // cA
@@ -89,7 +95,7 @@ export const inverters = z.strictObject({
   type: z.literal('inverters'),
   seq,
   rows: rows({
-    inverter: z.string().max(64),
+    inverter: text(64),
     acPower: z.int().min(-10_000).max(10_000_000).nullable(), // W
     energy: z.int().min(0).nullable(), // Wh, counter
     status: z.enum(INVERTER_STATUSES),
@@ -128,11 +134,11 @@ export const command = z.strictObject({
   type: z.literal('command'),
   seq,
   /** One of the two names, as in the roster. */
-  zone: z.string().max(64).optional(),
-  transmitter: z.string().max(64).optional(),
+  zone: text(64).optional(),
+  transmitter: text(64).optional(),
   inForce: z.enum(COMMANDS),
   since: epoch,
-  by: z.string().max(120),
+  by: text(120),
 });
 
 export const trace = z.strictObject({

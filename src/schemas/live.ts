@@ -10,7 +10,9 @@ import { eventItem, gatewayNow, inverterNow, siteNow, stringNow } from './api/no
 export const CLOSE_COME_BACK = 4001; // too slow to keep up: reconnect with the cursor
 export const CLOSE_SIGNED_OUT = 4003;
 
-export const topic = z.string().regex(/^(fleet|notices|(site|string|roll-call):[0-9a-f-]{36})$/);
+export const topic = z
+  .string()
+  .regex(/^(fleet|notices|(site|string|roll-call):[0-9a-f]{8}(-[0-9a-f]{4}){3}-[0-9a-f]{12})$/);
 
 export const clientMessage = z.discriminatedUnion('type', [
   z.strictObject({ type: z.literal('subscribe'), topic, cursor: z.string().max(80).optional() }),

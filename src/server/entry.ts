@@ -47,6 +47,7 @@ export interface Running {
 
 /** No endpoint reads more, photos included; what reads less says so itself (http/body.ts, files/spool.ts). */
 const REQUEST_MAX_BYTES = 32 * 1024 * 1024;
+const METHODS = ['GET', 'HEAD', 'POST', 'PUT', 'PATCH', 'DELETE', 'OPTIONS'];
 
 /** An answer without Astro: a problem document for the API, a line of text for a browser. */
 function answer(req: IncomingMessage, res: ServerResponse, status: number, message: string): void {
@@ -74,6 +75,15 @@ function refuseEarly(req: IncomingMessage, res: ServerResponse): boolean {
     decodeURI(req.url);
   } catch {
     answer(req, res, 400, requestRefusals.badEscape);
+    return true;
+  }
+  if (req.url.includes('%00')) {
+    answer(req, res, 400, requestRefusals.noText);
+    return true;
+  }
+  if (!METHODS.includes(req.method ?? '')) {
+    res.setHeader('allow', METHODS.join(', '));
+    answer(req, res, ERROR_KINDS.not_allowed.status, requestRefusals.noSuchMethod(METHODS.join(', ')));
     return true;
   }
   if (Number(req.headers['content-length'] ?? 0) > REQUEST_MAX_BYTES) {

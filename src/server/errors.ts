@@ -81,3 +81,7 @@ export function found<T>(value: T | null | undefined, what: string): T {
     throw new AppError('not_found', { message: errorTitles.noSuch(what) });
   return value;
 }
+
+/** Text that PostgreSQL can't keep: a NUL, or what its encoding has no place for. */
+export const isUnkeepable = (error: unknown): boolean =>
+  error instanceof Error && 'code' in error && (error.code === '22021' || error.code === '22P05');

@@ -42,6 +42,7 @@ export const bodyRefusals = {
   contentType: (type: string) => `The body has content type "${type || 'none'}"; send application/json.`,
   sendJson: 'send application/json',
   unreadable: 'not readable',
+  noText: 'has a character that no text has (NUL); leave it out',
   noJson: (reason: string) => `The body is not JSON: ${reason}`,
 };
 
@@ -79,6 +80,7 @@ export const pageRefusals = {
 };
 
 export const problemWords = {
+  unkeepable: 'Something in it is no text (a NUL character). Leave it out and send it again.',
   databaseAway:
     'The database does not answer. Readings already acknowledged are kept; try again in a minute.',
   failedHere: 'Something failed on our side',
@@ -124,6 +126,8 @@ export const uploadRefusals = {
 export const requestRefusals = {
   addressUnreadable: 'The address is not readable.',
   badEscape: 'The address has a % that encodes nothing.',
+  noText: 'The address has a character that no text has (NUL).',
+  noSuchMethod: (methods: string) => `This method is not known here. There are ${methods}.`,
   tooLarge: (bytes: number) => `A body may have at most ${bytes} bytes. Send less at once.`,
   noPagesHere: 'This process serves no pages.',
 };
@@ -159,6 +163,7 @@ export const ingestRefusals = {
 export const doorRefusals = {
   otherSite: 'The request came from another site.',
   onlyRead: 'A shared page is only read.',
+  noSuchCall: 'There is nothing at this address, or nothing by this method.',
   notReachable: 'Not reachable just now',
   databaseAway: 'The database does not answer, so Wakeline cannot tell who you are. Try again in a minute.',
 };

@@ -50,8 +50,30 @@ describe('the server', () => {
     ['GET / HTTP/1.1\r\n\r\n', 400],
     ['garbage\r\n\r\n', 400],
     [`POST /api/sign-in HTTP/1.1\r\nHost: x\r\nContent-Length: 99000000\r\n\r\n`, 413],
+    ['GET /audit?q=%00 HTTP/1.1\r\nHost: x\r\n\r\n', 400],
+    ['TRACE / HTTP/1.1\r\nHost: x\r\n\r\n', 405],
+    ['GET /sign-in HTTP/1.1\r\nHost: x\r\nConnection: close\r\nCookie: other=%ff\r\n\r\n', 200],
   ])('answers %j with %i', async (request, status) => {
     expect(await raw(request)).toMatch(new RegExp(`^HTTP/1.1 ${status} `));
+  });
+
+  it.each([
+    ['GET', '/api/nothing'],
+    ['PUT', '/api/fleet'],
+  ])('answers a program in the form that it knows: %s %s', async (method, path) => {
+    const answer = await fetch(site.url + path, { method, headers: { origin: site.url } });
+    expect(answer.status).toBe(404);
+    expect(answer.headers.get('content-type')).toBe('application/problem+json');
+  });
+
+  it('refuses what the database keeps nowhere, with the field named', async () => {
+    const answer = await fetch(`${site.url}/api/sign-in`, {
+      method: 'POST',
+      headers: { origin: site.url, 'content-type': 'application/json' },
+      body: JSON.stringify({ email: 'somebody@lowfield.example\0', password: 'x' }),
+    });
+    expect(answer.status).toBe(422);
+    expect(await answer.json()).toMatchObject({ fields: [{ field: 'body.email' }] });
   });
 
   it('gives no upgrade at a path of none of its sockets', async () => {

@@ -69,6 +69,12 @@ describe('frames that are wrong are refused with the field named, counted, and t
       /99999.*from -2000 to 20000/,
     ],
     ['a fraction', (f) => (f.frame.current[0] = 1.5), 'frames[1].current[0]', /whole number/],
+    [
+      'what can be no text among numbers',
+      (f) => (f.frame.state[0] = { toString: 1 } as never),
+      'frames[1].state[0]',
+      /an object/,
+    ],
     ['text among numbers', (f) => (f.frame.signal[2] = '-70' as never), 'frames[1].signal[2]', /"-70"/],
     ['an array that is too short', (f) => f.frame.temperature.pop(), 'frames[1].temperature', /slots/],
     ['an array that is too long', (f) => f.frame.via.push(1), 'frames[1].via', /slots/],
@@ -122,6 +128,13 @@ describe('messages that are wrong as a whole', () => {
     ['JSON that is no object', '[1,2,3]', false, 'message'],
     ['a type that the protocol does not have', '{"type":"release","seq":5}', false, 'type'],
     ['an empty object', '{}', false, 'type'],
+    ['a type that is no text', '{"type":{"toString":1}}', false, 'type'],
+    [
+      'a type that is nothing but depth',
+      `{"type":${'['.repeat(60_000)}${']'.repeat(60_000)}}`,
+      false,
+      'type',
+    ],
   ];
   it.each(raw)('%s', async (_, data, binary, field) => {
     const { n } = await counted();
@@ -207,6 +220,24 @@ describe('a hello that is wrong', () => {
     expect((await other.closed).code).toBe(4422);
   });
 
+  it('of a protocol version that is no number is answered and the connection closed', async () => {
+    const other = await TestLogger.connect(sockets, token);
+    other.send({ type: 'hello', protocol: { toString: 1 } });
+    expect((await other.inbox.next('refused')).reason).toBe(
+      'this server speaks version 1; the logger said an object',
+    );
+    expect((await other.closed).code).toBe(4422);
+  });
+
+  it('with a firmware that is no text is refused, and may be said again', async () => {
+    const other = await TestLogger.connect(sockets, token);
+    other.hello(serial, { firmware: '1.0\u0000' });
+    expect(await other.inbox.next('refused')).toMatchObject({ field: 'firmware', again: true });
+    other.hello(serial);
+    await other.inbox.next('roster');
+    other.ws.terminate();
+  });
+
   it('of another serial than the token is for', async () => {
     const { n } = await counted();
     const other = await TestLogger.connect(sockets, token);
@@ -252,6 +283,20 @@ describe('what is said to whom', () => {
       other.frames([{ at: nowS(), string: string.index, frame: frameOf(string.serials.length, 'both') }]),
     );
     expect(refusal.reason).toMatch(/shutdown-only/);
+    other.ws.terminate();
+  });
+
+  it('the same wrong token again and again holds up nobody else behind its address', async () => {
+    const answers = new Set<string>();
+    for (let i = 0; i < 35; i++)
+      answers.add(
+        await TestLogger.connect(sockets, 'set-up-wrongly').then(
+          () => 'in',
+          (e: Error) => e.message,
+        ),
+      );
+    expect([...answers]).toEqual(['HTTP 401', 'HTTP 429']);
+    const other = await TestLogger.arrive(sockets, token, serial);
     other.ws.terminate();
   });
 

@@ -279,6 +279,10 @@ describe('what they hear', () => {
     expect((await inbox.next('refused')).topic).toBe('everything');
     inbox.ws.send('not json');
     await inbox.next('refused');
+    for (const topic of ['{"toString":1}', '["fleet"]', `"site:${'-'.repeat(36)}"`]) {
+      inbox.ws.send(`{"type":"subscribe","topic":${topic}}`);
+      await inbox.next('refused');
+    }
     subscribe(inbox, 'fleet');
     await inbox.next('snapshot');
   });

@@ -55,6 +55,12 @@ describe('signing in', () => {
     expect(stolen).not.toHaveProperty('actor');
   });
 
+  it('reads nothing but its own cookies of what a browser sends', async () => {
+    const { cookie } = await attempt('analyst@lowfield.example');
+    for (const other of ['other=%ff', 'other=%', 'a;b;;=c', 'wakeline_kept=%ff', 'wakeline_kept=\u0000'])
+      expect(await signedInBy(`${other}; ${cookieOf(cookie)}`)).toHaveProperty('actor');
+  });
+
   it('"keep me signed in" gives a cookie that outlives the browser; without it none does', async () => {
     expect((await attempt('analyst@lowfield.example', PASSWORD, '127.0.0.1', true)).cookie).toMatch(
       /Max-Age=\d{7}/,

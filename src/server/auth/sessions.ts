@@ -76,11 +76,19 @@ async function validated(lucia: Lucia, sessionId: string): Promise<{ session: Se
   return { session, user };
 }
 
+/** The cookies of ours that can be a session's. Whatever else a host's programs put beside them is not read. */
+const ours = (cookieHeader: string): string =>
+  cookieHeader
+    .split(';')
+    .map((cookie) => cookie.trim())
+    .filter((cookie) => /^wakeline_(kept|session)=[a-z0-9]+$/.test(cookie))
+    .join('; ');
+
 /** Who a Cookie header stands for; null when nobody, or somebody who has been deactivated. */
 export async function signedInBy(cookieHeader: string): Promise<SignedIn | { cookies: string[] }> {
   const blanks: string[] = [];
   for (const lucia of lucias()) {
-    const sessionId = lucia.readSessionCookie(cookieHeader);
+    const sessionId = lucia.readSessionCookie(ours(cookieHeader));
     if (!sessionId) continue;
     const found = await validated(lucia, sessionId);
     const person = found && (await personOfSession(found.user.id, sessionHash(sessionId)));

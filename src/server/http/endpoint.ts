@@ -8,7 +8,7 @@ import { asOnlooker } from '../replica';
 import { readBody } from './body';
 import { hasJustWritten } from './just-written';
 import { problem } from './problem';
-import { endpointRefusals } from '../../words/refusals';
+import { bodyRefusals, endpointRefusals } from '../../words/refusals';
 
 /**
  * The one wrapper of API routes: who may, what comes in, what goes out when it fails.
@@ -36,6 +36,17 @@ export interface ActorCall<P, Q, B, R = undefined> extends Call<P, Q, B> {
   received: R;
 }
 
+/** Where a text has a NUL, which the database keeps nowhere; null: nowhere. Of what a schema let through, so not deep. */
+function nulIn(value: unknown, path: string): string | null {
+  if (typeof value === 'string') return value.includes('\0') ? path : null;
+  if (typeof value !== 'object' || value === null) return null;
+  for (const [key, part] of Object.entries(value)) {
+    const found = nulIn(part, `${path}.${key}`);
+    if (found !== null) return found;
+  }
+  return null;
+}
+
 export function checked<T extends z.ZodType>(
   schema: T | undefined,
   value: unknown,
@@ -43,11 +54,11 @@ export function checked<T extends z.ZodType>(
 ): z.infer<T> {
   if (!schema) return undefined as z.infer<T>;
   const result = schema.safeParse(value);
-  if (result.success) return result.data;
-  const fields = result.error.issues.map((i) => ({
-    field: [where, ...i.path].join('.'),
-    message: i.message,
-  }));
+  const nul = result.success ? nulIn(result.data, where) : null;
+  if (result.success && nul === null) return result.data;
+  const fields = result.success
+    ? [{ field: nul ?? where, message: bodyRefusals.noText }]
+    : result.error.issues.map((i) => ({ field: [where, ...i.path].join('.'), message: i.message }));
   // an identifier that cannot exist is a thing that is not there
   if (where === 'path') throw new AppError('not_found', { message: endpointRefusals.noSuchAddress });
   throw new AppError('invalid', {

@@ -1,10 +1,11 @@
-import { AppError, ERROR_KINDS, isDatabaseAway, type ErrorKind } from '../errors';
+import { AppError, ERROR_KINDS, isDatabaseAway, isUnkeepable, type ErrorKind } from '../errors';
 import { log } from '../log';
 import { problemWords } from '../../words/refusals';
 
 /** Any thrown thing as a kind and a detail; what is not ours to explain becomes undefined. */
 export function explain(error: unknown): AppError | undefined {
   if (error instanceof AppError) return error;
+  if (isUnkeepable(error)) return new AppError('invalid', { message: problemWords.unkeepable });
   if (isDatabaseAway(error))
     return new AppError('unavailable', {
       message: problemWords.databaseAway,

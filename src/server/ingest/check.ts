@@ -13,10 +13,13 @@ const FIELDS = Object.keys(FRAME_RANGES) as FrameField[];
 const ALWAYS = ['current', 'temperature', 'signal', 'via', 'state'] as const;
 
 const fault = (field: string, reason: string): Fault => ({ field, reason, again: false });
-const shown = (value: unknown): string => {
-  const text = typeof value === 'string' ? JSON.stringify(value) : String(value);
+
+/** What was sent, short enough for a refusal to name it. What has parts is only named: it may be of any depth. */
+export function shown(value: unknown): string {
+  if (typeof value === 'object' && value !== null) return Array.isArray(value) ? 'an array' : 'an object';
+  const text = typeof value === 'string' ? JSON.stringify(value.slice(0, 60)) : String(value);
   return text.length > 40 ? `${text.slice(0, 37)}…` : text;
-};
+}
 
 /** The index of the first value that is neither null nor an integer in the range; −1 where all are. */
 function firstBad(values: readonly unknown[], low: number, high: number): number {

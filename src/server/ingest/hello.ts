@@ -1,6 +1,7 @@
 import { z } from 'zod';
 import { CLOCK_AHEAD_MAX_S, hello, PROTOCOL } from '../../schemas/ingest';
 import type { ErrorKind } from '../errors';
+import { shown } from './check';
 
 /** What a hello came to: the firmware's name, or what is wrong with it and whether the connection can go on. */
 export type ReadHello =
@@ -24,7 +25,7 @@ export function readHello(value: Record<string, unknown>, serial: string, nowS: 
     return {
       ok: false,
       field: 'protocol',
-      reason: `this server speaks version ${PROTOCOL}; the logger said ${String(version.data.protocol)}`,
+      reason: `this server speaks version ${PROTOCOL}; the logger said ${shown(version.data.protocol)}`,
       again: false,
       end: { kind: 'invalid', reason: `protocol version ${PROTOCOL} only` },
     };

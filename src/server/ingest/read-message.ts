@@ -10,7 +10,7 @@ import {
 import { config } from '../config';
 import { inputKey, type FrameRow, type RosterView } from '../queries/ingest-rows';
 import type { Work } from './batch';
-import { checkFrame, isFault, type Fault } from './check';
+import { checkFrame, isFault, shown, type Fault } from './check';
 
 /** From bytes to rows: each step gives what it read, or the fault with its field named. */
 
@@ -76,7 +76,7 @@ export function readEnvelope(value: Record<string, unknown>): Reading<LoggerMess
   return refuse(
     seq,
     field,
-    field === 'type' ? `"${String(value.type)}" is no message of this protocol` : reason,
+    field === 'type' ? `${shown(value.type)} is no message of this protocol` : reason,
   );
 }
 

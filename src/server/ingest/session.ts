@@ -117,7 +117,17 @@ export class Session {
     this.send({ type: 'refused', seq, field, reason, again });
   }
 
+  /** One message that can't be read must not end what all the others are served by. */
   private handle(data: Buffer, isBinary: boolean): void {
+    try {
+      this.read(data, isBinary);
+    } catch (error) {
+      log.error({ error, logger: this.logger.serial }, 'a message of a logger could not be read');
+      this.refuse({ seq: null, field: 'message', reason: 'could not be read here', again: false });
+    }
+  }
+
+  private read(data: Buffer, isBinary: boolean): void {
     const json = readJson(data, isBinary);
     if (!json.ok) {
       this.refuse(json.refused);

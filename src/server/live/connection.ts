@@ -60,7 +60,15 @@ export class Connection {
       this.topics.clear();
       closed(this);
     });
-    ws.on('message', (data, isBinary) => this.take(data as Buffer, isBinary));
+    ws.on('message', (data, isBinary) => {
+      // one message that can't be read must not end what all the others are served by
+      try {
+        this.take(data as Buffer, isBinary);
+      } catch (error) {
+        log.error({ error }, 'a message of a browser could not be read');
+        ws.close(1008, liveRefusals.noMessage);
+      }
+    });
   }
 
   send(message: LiveMessage): void {
@@ -85,7 +93,9 @@ export class Connection {
     const parsed = clientMessage.safeParse(value);
     if (!parsed.success) {
       const topic =
-        typeof value === 'object' && value !== null && 'topic' in value ? String(value.topic) : '';
+        typeof value === 'object' && value !== null && 'topic' in value && typeof value.topic === 'string'
+          ? value.topic
+          : '';
       this.send({ type: 'refused', topic: topic.slice(0, 80), reason: liveRefusals.noMessage });
       return;
     }
