@@ -62,7 +62,7 @@ export async function invertersNow(tx: Tx, at: Date, siteId: number): Promise<In
       ...r,
       at: r.at?.toISOString() ?? null,
       // an old figure is no power now
-      acPower: r.at && isFresh(r.at, at, reportIntervalS) ? r.acPower : null,
+      acPower: !isSilent(r.at, at, reportIntervalS) ? r.acPower : null,
       arcFlag: r.arcFlag ?? false,
       earthFaultFlag: r.earthFaultFlag ?? false,
       inputs: r.inputs.map((i) => ({
@@ -75,11 +75,7 @@ export async function invertersNow(tx: Tx, at: Date, siteId: number): Promise<In
     .sort((a, b) => byName.compare(a.name, b.name));
 }
 
-/** Reports older than five intervals are no longer "now". */
-export const isFresh = (reported: Date, at: Date, reportIntervalS: number): boolean =>
-  at.getTime() - reported.getTime() <= 5 * reportIntervalS * 1000;
-
-/** Three report intervals without a word, as for a unit. */
+/** Three report intervals without a word, as for a unit. An older figure is none of now. */
 export const isSilent = (heard: Date | null, at: Date, reportIntervalS: number): boolean =>
   heard === null || at.getTime() - heard.getTime() > 3 * reportIntervalS * 1000;
 

@@ -2,7 +2,7 @@ import { solarPositionQuick } from '../../domain/photovoltaics/sun/position-quic
 import type { CommandNow, Counts, SiteNow } from '../../schemas/api/now';
 import type { InForce } from '../../domain/verdicts/codes';
 import type { Tx } from '../db/transaction';
-import { isFresh, isLightAt, isSilent } from './now';
+import { isLightAt, isSilent } from './now';
 import { SITE_VISIBLE } from './visible-site';
 
 interface Place {
@@ -137,7 +137,7 @@ function siteOf(place: Place, parts: Parts, at: Date, performanceRatio: number |
     stage: place.stage,
     counts: { units: parts.units[id] ?? 0, ...(parts.judged[id] ?? NOTHING_JUDGED) },
     strings: parts.strings[id] ?? 0,
-    power: output && isFresh(new Date(output.at), at, place.reportIntervalS) ? output.acPower : null,
+    power: output && !isSilent(new Date(output.at), at, place.reportIntervalS) ? output.acPower : null,
     acPowerMax: parts.acPowerMax[id] ?? 0,
     reportedAt: reportedAt === undefined ? null : new Date(reportedAt).toISOString(),
     daylight: elevation > 0,
