@@ -1,3 +1,4 @@
+import { clockSeconds } from '../drawings/times';
 export const jobsPageWords = {
   backgroundJobs: 'Background jobs',
 };
@@ -66,6 +67,8 @@ export const sitesSiteHistoryImportPage = {
 
 export const statusPage = {
   lookAgain: 'Look again',
+  asOf: (at: string, timeZone: string) => `As of ${clockSeconds(at, timeZone)}. `,
+  notRead: 'It could not be read again since then: what has happened meanwhile is not known.',
 };
 
 export const mySitePage = {
