@@ -5,6 +5,7 @@ import net from 'node:net';
 import os from 'node:os';
 import path from 'node:path';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import { keepRunning } from '../../src/server/up/keep-running.mjs';
 import { bornAt, freePort, isAlive, listenerOf } from '../../src/server/up/processes.mjs';
 
 const ROOT = path.resolve(import.meta.dirname, '../..');
@@ -107,6 +108,39 @@ describe('what was started', () => {
     );
     return { parent, child };
   };
+
+  const parts = (script: string, stands: () => boolean) => {
+    const begun: ChildProcess[] = [];
+    const ends: (() => Promise<unknown>)[] = [];
+    const over = keepRunning(
+      () => {
+        const part = spawn(process.execPath, ['-e', script], { stdio: 'ignore', detached: true });
+        begun.push(part);
+        return part;
+      },
+      { name: 'The part', stands, pauseMs: 10 },
+      (work) => ends.push(work),
+    );
+    return { begun, over, end: () => Promise.all(ends.map((work) => work())) };
+  };
+
+  it('is started again when it is killed, and is not when all ends', async () => {
+    const { begun, end } = parts('setInterval(() => {}, 1000)', () => true);
+    begun[0]?.kill('SIGKILL');
+    await expect.poll(() => begun.length, { timeout: 15_000 }).toBe(2);
+    await end();
+    expect(isAlive(begun[1]?.pid ?? 0)).toBe(false);
+    expect(begun).toHaveLength(2);
+  });
+
+  it('is given up after five tries, and at once where it never stood', async () => {
+    const falls = parts('process.exit(3)', () => true);
+    expect(await falls.over).toMatchObject({ name: 'The part', code: 3 });
+    expect(falls.begun).toHaveLength(5);
+    const never = parts('process.exit(3)', () => false);
+    expect(await never.over).toMatchObject({ code: 3 });
+    expect(never.begun).toHaveLength(1);
+  });
 
   it('ends when its starter is killed outright', async () => {
     const { parent, child } = await launcher();

@@ -7,6 +7,7 @@ import { postmasterOf, startCluster } from './cluster.mjs';
 import { homeOf, makeHome } from './home.mjs';
 import { dropLock, holderOf, takeLock } from './lock.mjs';
 import { root } from './place.mjs';
+import { keepRunning } from './keep-running.mjs';
 import { end, freePort, launch, listenerOf } from './processes.mjs';
 import { elapsedS, say, Stop } from './say.mjs';
 import { prepareDemo, stageDatabase } from './stage.mjs';
@@ -57,13 +58,6 @@ function show(child, name) {
   }
 }
 
-/** Resolves when the part ends by itself, which is always news. */
-const endOf = (child, name) =>
-  new Promise((resolve) => {
-    child.once('exit', (code, signal) => resolve({ name, code, signal }));
-    child.once('error', (error) => resolve({ name, code: error.message, signal: null }));
-  });
-
 function settings(stage, addresses, { host, port, simulatorPort, address, post }) {
   return {
     ...process.env,
@@ -107,45 +101,25 @@ async function answers(url, died) {
   throw new Stop(`${url} does not answer.`, 'See the lines above for why.');
 }
 
-const SIMULATOR_TRIES = 5;
-
-/** The simulator runs along; one that falls is started again, so that the site in view stays. Resolves when that is given up. */
-function launchSimulator(env, { scheme, reach, simulatorPort, stage }, atEnd) {
-  let simulator;
-  let ending = false;
-  atEnd(() => {
-    ending = true;
-    return end(simulator);
+function launchSimulator(env, { scheme, reach, simulatorPort, stage }) {
+  const simulator = launch(process.execPath, ['--import', 'tsx', 'simulator/main.ts'], {
+    cwd: root,
+    env: {
+      ...env,
+      DATABASE_URL: '', // it knows the plant by its own plan, and has no business in the database
+      DATABASE_URL_APP: '',
+      DATABASE_URL_INGEST: '',
+      WAKELINE_INGEST_URL: `${scheme === 'https' ? 'wss' : 'ws'}://${reach}/ingest/v1`,
+      NODE_EXTRA_CA_CERTS: (scheme === 'https' && process.env.TLS_CERT) || process.env.NODE_EXTRA_CA_CERTS, // it may be signed by itself
+      WAKELINE_DEMO_SECRET: stage.state.demoSecret,
+      WAKELINE_DEMO_SINCE: stage.state.demoSince ? String(stage.state.demoSince) : undefined,
+      WAKELINE_SIM_STATE: path.join(stage.home, 'simulator.json'),
+      WAKELINE_URL: `${scheme}://${reach}/`,
+      SIMULATOR_PORT: String(simulatorPort),
+    },
   });
-  return new Promise((resolve) => {
-    const begin = (attempt) => {
-      simulator = launch(process.execPath, ['--import', 'tsx', 'simulator/main.ts'], {
-        cwd: root,
-        env: {
-          ...env,
-          DATABASE_URL: '', // it knows the plant by its own plan, and has no business in the database
-          DATABASE_URL_APP: '',
-          DATABASE_URL_INGEST: '',
-          WAKELINE_INGEST_URL: `${scheme === 'https' ? 'wss' : 'ws'}://${reach}/ingest/v1`,
-          NODE_EXTRA_CA_CERTS:
-            (scheme === 'https' && process.env.TLS_CERT) || process.env.NODE_EXTRA_CA_CERTS, // it may be signed by itself
-          WAKELINE_DEMO_SECRET: stage.state.demoSecret,
-          WAKELINE_DEMO_SINCE: stage.state.demoSince ? String(stage.state.demoSince) : undefined,
-          WAKELINE_SIM_STATE: path.join(stage.home, 'simulator.json'),
-          WAKELINE_URL: `${scheme}://${reach}/`,
-          SIMULATOR_PORT: String(simulatorPort),
-        },
-      });
-      show(simulator, 'simulator');
-      void endOf(simulator, 'The simulator').then((how) => {
-        if (ending) return;
-        if (attempt === SIMULATOR_TRIES) return resolve(how);
-        say(`the simulator has ended (${how.signal ?? `exit ${how.code}`}): starting it again`);
-        setTimeout(() => ending || begin(attempt + 1), 2000);
-      });
-    };
-    begin(1);
-  });
+  show(simulator, 'simulator');
+  return simulator;
 }
 
 /** A database server that was killed is started again; the site finds it by itself. Rejects where that fails. */
@@ -233,14 +207,26 @@ async function bringUpDemo(args, atEnd, { prepare = () => Promise.resolve(), sec
   const post = stage.hasDemo && !process.env.SMTP_URL ? await launchLocalPost(stage.home, atEnd) : undefined;
   const env = settings(stage, addresses, { host, port, simulatorPort, address, post });
   await prepared;
-  const site = launchSite(env);
-  atEnd(() => end(site, 20_000));
-  const siteEnded = endOf(site, 'The site');
+  let stands = false;
+  const siteEnded = keepRunning(
+    () => launchSite(env),
+    { name: 'The site', patienceMs: 20_000, stands: () => stands },
+    atEnd,
+  );
   say(stage.hasDemo ? 'starting the site and the simulator' : 'starting the site');
   const parts = [siteEnded];
-  if (stage.hasDemo) parts.push(launchSimulator(env, { scheme, reach, simulatorPort, stage }, atEnd));
-  if (await answers(`${address}sign-in`, siteEnded))
+  if (stage.hasDemo)
+    parts.push(
+      keepRunning(
+        () => launchSimulator(env, { scheme, reach, simulatorPort, stage }),
+        { name: 'The simulator' },
+        atEnd,
+      ),
+    );
+  if (await answers(`${address}sign-in`, siteEnded)) {
+    stands = true;
     welcome(address, stage.hasDemo ? simulatorPort : undefined, elapsedS());
+  }
   const { name, code, signal } = await Promise.race([...parts, watchDatabase(stage, atEnd)]);
   throw new Stop(
     `${name} ended by itself (${signal ?? `exit ${code}`}).`,
