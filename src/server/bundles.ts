@@ -7,7 +7,7 @@ const TOGETHER: readonly (readonly [name: string, test: RegExp])[] = [
   ['query', /node_modules\/@tanstack\//],
   [
     'common',
-    /src\/(components\/ui\/(?!Dialog|Figure|Fold|Choice|Field)|lib\/(api|live|live-hook|view-in-url)\.|drawings\/(numbers|times)\.|schemas\/paths\.ts$|words\/(ui|language)\.)|vite\/preload-helper/,
+    /src\/(components\/ui\/(?!Dialog|Figure|Fold|Choice|Field)|lib\/(api|live|live-hook|view-in-url)\.|drawings\/(numbers|times)\.|schemas\/paths\.ts$|domain\/grouped-by\.|words\/(ui|language)\.)|vite\/preload-helper/,
   ],
 ];
 

@@ -125,3 +125,26 @@ describe('a site', () => {
 
 const cookieHeader = async (): Promise<string> =>
   (await page.context().cookies(site.url)).map((c) => `${c.name}=${c.value}`).join('; ');
+
+describe('the state of the installation', () => {
+  it('is read again by itself, and says where that failed', async () => {
+    const context = await browser.newContext();
+    await signOnTo(context, site.url, 'manager');
+    const status = await context.newPage();
+    await status.clock.install();
+    await status.goto(`${site.url}/status`);
+    const said = () => status.getByText(/^As of/).textContent();
+    const before = await said();
+    await status.clock.runFor(31_000);
+    await expect.poll(said, SOON).not.toBe(before);
+    const failed = status.getByText('It could not be read again since then');
+    expect(await failed.isVisible()).toBe(false);
+    await status.route('**/status', (route) => route.abort());
+    await status.clock.runFor(31_000);
+    await failed.waitFor();
+    await status.unroute('**/status');
+    await status.clock.runFor(31_000);
+    await failed.waitFor({ state: 'hidden' });
+    await context.close();
+  });
+});
