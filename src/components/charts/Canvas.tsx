@@ -126,6 +126,10 @@ export default function Canvas({ model, height, width, onReady, onZoom, moment =
     <div
       className="relative"
       style={draggable ? { touchAction: 'pan-y', cursor: 'col-resize' } : undefined}
+      // the library keeps every turn of the wheel to itself: without Ctrl it is the page's
+      onWheelCapture={(event) => {
+        if (!event.ctrlKey) event.stopPropagation();
+      }}
       onPointerDown={(event) => {
         if (!draggable || event.button !== 0 || !inPlot(event)) return;
         dragging.current = true;

@@ -8,6 +8,7 @@ import { toWall } from './local-time';
 import { useNear, useWidth } from './near';
 import type { ChartModel } from './model';
 import { readout } from './options';
+import { shareOf, WHOLE, zoomed } from './sight';
 import { late, patiently } from '../../lib/late';
 import { timeChart } from '../../words/charts';
 
@@ -58,17 +59,17 @@ export function TimeChart({
   const ready = useCallback((instance: ECharts) => {
     chart.current = instance;
   }, []);
-  const zoomed = useCallback((span: Span | null) => onZoom?.(span), [onZoom]);
+  const hasZoomed = useCallback((span: Span | null) => onZoom?.(span), [onZoom]);
+  const cursorAt = () => (cursor.current === null ? null : (model.lines[0]?.at[cursor.current] ?? null));
 
   const zoomBy = (factor: number | null) => {
     const instance = chart.current;
     if (!instance || instance.isDisposed()) return;
     const zoom = (instance.getOption() as { dataZoom?: { start?: number; end?: number }[] }).dataZoom?.[0];
     const [start, end] = [zoom?.start ?? 0, zoom?.end ?? 100];
-    const middle = (start + end) / 2;
-    const half = factor === null ? 50 : Math.min(50, Math.max(0.5, ((end - start) / 2) * factor));
-    const from = factor === null ? 0 : Math.min(100 - 2 * half, Math.max(0, middle - half));
-    instance.dispatchAction({ type: 'dataZoom', start: from, end: from + 2 * half });
+    const sight =
+      factor === null ? WHOLE : zoomed([start, end], factor, shareOf(model, moment ?? cursorAt()));
+    instance.dispatchAction({ type: 'dataZoom', start: sight[0], end: sight[1] });
   };
   const moveCursor = (step: number) => {
     const line = model.lines[0];
@@ -86,8 +87,8 @@ export function TimeChart({
     );
   };
   const chooseMoment = () => {
-    const at = cursor.current === null ? undefined : model.lines[0]?.at[cursor.current];
-    if (at !== undefined) onMoment?.(at, true);
+    const at = cursorAt();
+    if (at !== null) onMoment?.(at, true);
   };
   const onKeyDown = (event: KeyboardEvent) => {
     if (event.target instanceof HTMLElement && event.target.matches('input, select, textarea')) return;
@@ -183,7 +184,7 @@ export function TimeChart({
               height={height}
               width={width}
               onReady={ready}
-              onZoom={zoomed}
+              onZoom={hasZoomed}
               moment={moment}
               onMoment={onMoment}
             />

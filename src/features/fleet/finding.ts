@@ -70,9 +70,12 @@ export function fleetFinding(sites: readonly SiteNow[], causes: readonly CauseNo
     const ofIt = causes.filter((c) => c.verdict === worst);
     const names = new Set(ofIt.map((c) => c.siteName));
     const there = names.size === 1 ? 'there' : sharedCausesFinding.atNamed([...names]);
+    const others = sites.filter((s) => !ofIt.some((c) => c.siteId === s.id));
+    const what = WHAT_TO_DO[worst](there);
     return {
       heading: headingOf(worst, ofIt),
-      sentence: fleetFindingWords.thereElsewhereSites(WHAT_TO_DO[worst](there), standing(sites, worst)),
+      sentence:
+        others.length === 0 ? what : fleetFindingWords.thereElsewhereSites(what, standing(others, worst)),
     };
   }
   if (away.length > 0)
