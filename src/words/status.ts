@@ -79,6 +79,9 @@ export const processSheets = {
 };
 
 export const processLines = {
+  databaseConnections: 'Connections to the database',
+  inUse: 'in use',
+  waitedFor: 'waited for',
   readingsMadeDurable: 'Readings made durable',
   readingsThatWaitedAt: 'Readings that waited at once',
   commitAndAcknowledgement95: 'Commit and acknowledgement, 95 of 100 within',

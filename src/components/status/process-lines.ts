@@ -100,6 +100,14 @@ export const PICTURES: readonly Picture[] = [
     lines: [{ figure: 'oldestDueS', gather: 'worst' }],
   },
   {
+    title: processLines.databaseConnections,
+    unit: 'connections',
+    lines: [
+      { figure: 'poolUsed', name: processLines.inUse, gather: 'worst' },
+      { figure: 'poolWaiting', name: processLines.waitedFor, gather: 'worst' },
+    ],
+  },
+  {
     title: processLines.memory,
     unit: 'MB',
     lines: [{ figure: 'rssBytes', gather: 'worst', drawn: (bytes) => bytes / 1e6 }],
