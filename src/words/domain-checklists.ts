@@ -12,6 +12,10 @@ export const checklistTexts = {
     check: 'Nothing commands shutdown here: initiator, its cable, grid supply',
     why: 'Units that were told to shut down are not stuck. Look at the initiator itself and at who used it last.',
   },
+  commanded: {
+    check: 'Shutdown is commanded here, for which zone and since when',
+    why: 'Only a unit that was told can fail to follow. Where the command has ended meanwhile, it passes rightly; look again when the next one comes.',
+  },
   keep_alive: {
     check: 'The transmitter has power, and other strings that hear it pass',
     why: 'Without the keep-alive every unit released by it stays in shutdown. If all strings of one transmitter are affected, it is the transmitter.',

@@ -16,7 +16,7 @@ export interface ChecklistItem {
 type ItemKey = keyof typeof checklistTexts;
 
 const LISTS: Record<CaseKind, readonly ItemKey[]> = {
-  not_shutting_down: ['told', 'command', 'left_out', 'cross_talk', 'roster', 'meter'],
+  not_shutting_down: ['told', 'commanded', 'left_out', 'cross_talk', 'roster', 'meter'],
   stuck: ['command', 'keep_alive', 'roster', 'replaced', 'module_leads', 'connectors'],
   unconfirmed: ['daylight', 'gateway_power', 'logger', 'roster', 'meter'],
   silent: ['daylight', 'gateway_power', 'logger', 'roster', 'replaced', 'module_leads'],
@@ -24,7 +24,7 @@ const LISTS: Record<CaseKind, readonly ItemKey[]> = {
   loop_resistance: ['same_meter', 'cable', 'connectors', 'long_leads', 'fuses'],
   wrong_string: ['roster', 'replaced', 'isolate_one'],
   weak_unit: ['shade', 'soiling', 'module_damage', 'module_leads', 'roster'],
-  other: ['seen', 'daylight', 'logger', 'inverter', 'roster'],
+  other: ['seen', 'daylight', 'logger', 'inverter', 'roster', 'meter'],
 };
 
 /** The lines to go through for a case of this kind, in their order. */
