@@ -18,8 +18,8 @@ export const caseEvidenceWords = {
 export const caseWords = {
   reported: (line: string) => `Reported: ${line}`,
   /** How a case's title begins. */
-  ofString: (string: string) => `String ${string}: `,
-  ofPosition: (string: string, position: number) => `String ${string}, position ${position}: `,
+  ofString: (string: string) => `String ${string}`,
+  ofPosition: (string: string, position: number) => `String ${string}, position ${position}`,
   couldAlsoBe: (alternatives: string) => `\nIt could also be: ${alternatives}.`,
 };
 

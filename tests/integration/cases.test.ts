@@ -7,7 +7,7 @@ import type { CaseChangeBody, CasePage } from '../../src/schemas/api/cases';
 import { asActor } from '../../src/server/db/transaction';
 import { caseEvidence } from '../../src/server/services/case-evidence';
 import { addCasePhoto, receiveCasePhoto } from '../../src/server/services/case-photo';
-import { casePage, casesPage, openCasesOfSite } from '../../src/server/services/cases';
+import { caseDraft, casePage, casesPage, openCasesOfSite } from '../../src/server/services/cases';
 import { changeCase } from '../../src/server/services/change-case';
 import { checkClosedCases } from '../../src/server/services/check-closed-cases';
 import { commentCase } from '../../src/server/services/comment-case';
@@ -97,6 +97,22 @@ const auditOf = async (ref: string) =>
   ).rows.map((r) => r.action);
 
 describe('opening a case', () => {
+  it('begins with what is found at its string or position, and with its name alone where nothing is', async () => {
+    const draft = (position?: number) =>
+      asActor(analyst, (tx) => caseDraft(tx, { string: string.ref, position }, now));
+    const found = await draft();
+    expect(found).toMatchObject({ kind: 'stuck', origin: 'string', chosen: [string.ref] });
+    expect(found.title).toMatch(new RegExp(`${string.name}.+stuck`));
+    expect(found.what).not.toBe('');
+    expect(found.parts).toEqual([{ string: string.ref, position: 2 }]);
+    expect(await draft(2)).toMatchObject({ kind: 'stuck', parts: [{ string: string.ref, position: 2 }] });
+    expect(await draft(1)).toMatchObject({
+      kind: 'other',
+      title: `String ${string.name}, position 1`,
+      parts: [{ string: string.ref, position: 1 }],
+    });
+  });
+
   it('keeps the figures of the minute, with event, history and audit', async () => {
     const { people } = await asActor(analyst, (tx) => casesPage(tx, analyst, 'current', now));
     const assignee = people.find((p) => p.name !== (people[0]?.name ?? ''));

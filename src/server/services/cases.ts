@@ -15,6 +15,7 @@ import { casesOf, caseWithFigures, entriesOf, photosOf, siteOfString, stringChoi
 import { causeForCase, openCaseOfCause, staffOf } from '../queries/cases-write';
 import { siteChoices } from '../queries/site';
 import { visibleSite } from '../queries/visible-site';
+import { causesNow } from './causes';
 import { caseWords } from '../../words/refusals-cases';
 
 const named = (people: readonly { ref: string; name: string }[]) =>
@@ -98,7 +99,7 @@ export async function caseDraft(tx: Tx, from: DraftFrom, at: Date): Promise<Case
   const draft = from.cause
     ? await draftOfCause(tx, from.cause, blank)
     : from.string
-      ? await draftOfString(tx, from.string, from.position, blank)
+      ? await draftOfString(tx, from.string, from.position, blank, at)
       : { ...blank, site: sites.find((s) => s.id === from.site)?.id ?? blank.site };
   if (!draft.site) return draft;
   const site = found(await visibleSite(tx, draft.site), 'site');
@@ -128,15 +129,30 @@ async function draftOfString(
   ref: string,
   position: number | undefined,
   blank: CaseDraft,
+  at: Date,
 ): Promise<CaseDraft> {
   const string = found(await siteOfString(tx, ref), 'string');
+  const site = found(await visibleSite(tx, string.site), 'site');
+  const causes = (await causesNow(tx, at, [site.id])).flatMap(({ units, ...cause }) => {
+    const here = units.filter(
+      (u) => u.stringId === ref && (position === undefined || u.position === null || u.position === position),
+    );
+    return here.length > 0 ? [{ ...cause, here }] : [];
+  });
+  const cause = causes.find((c) => c.verdict === 'not_shutting_down') ?? causes[0];
+  const place =
+    position === undefined ? caseWords.ofString(string.name) : caseWords.ofPosition(string.name, position);
   return {
     ...blank,
     site: string.site,
     origin: 'string',
-    title:
-      position === undefined ? caseWords.ofString(string.name) : caseWords.ofPosition(string.name, position),
+    title: cause?.headline ?? place,
+    what: cause?.evidence ?? '',
+    kind: cause ? caseKindOf(cause.verdict) : blank.kind,
     chosen: [ref],
-    parts: position === undefined ? [] : [{ string: ref, position }],
+    parts:
+      position !== undefined
+        ? [{ string: ref, position }]
+        : (cause?.here ?? []).map((u) => ({ string: ref, position: u.position })),
   };
 }
