@@ -2,7 +2,8 @@ import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import type { CommandNow } from '../schemas/api/now';
 import type { CustomerNow } from '../schemas/api/customer';
-import { customerWords } from './customer-sentences';
+import { roofPage } from './customer';
+import { customerWords, heardAt } from './customer-sentences';
 
 const AT = '2026-12-01T14:30:00.000Z';
 const CARE = { organisation: 'Lowfield Solar Works' };
@@ -29,6 +30,7 @@ const roof = (more: Partial<CustomerNow> = {}): CustomerNow => ({
   unconfirmed: 0,
   stringsNotShuttingDown: 0,
   power: 31_000,
+  madeLast: null,
   daylight: true,
   loggers: 1,
   quietLoggers: 0,
@@ -69,6 +71,23 @@ describe('a roof at work', () => {
     expect(said(roof({ reporting: 60, passing: 60 })).heading).toBe(
       'Your roof is making 31.0 kW. All 60 modules that report are passing power.',
     );
+  });
+  it('says what it made when last measured as something past', () => {
+    const madeLast = { power: 26_300, at: '2026-12-01T14:26:05.000Z' };
+    const words = said(roof({ power: null, madeLast, passing: 0, silent: 96 }));
+    expect(words.heading).toBe(
+      'Your roof made 26.3 kW at 14:26; no reading of its power has come since. Its modules do not report just now.',
+    );
+    expect(words.calm).toBe(false);
+    expect(said(roof({ power: null, madeLast: { ...madeLast, power: 3 } })).heading).toContain(
+      'Your roof made no power at 14:26; no reading of its power has come since.',
+    );
+  });
+  it('is as of the newest word from the roof, not of when the page was read', () => {
+    expect(heardAt(roof({ lastSpokeAt: '2026-12-01T14:26:05.000Z' }))).toBe('2026-12-01T14:26:05.000Z');
+    expect(heardAt(roof({ lastSpokeAt: null }))).toBe(AT);
+    expect(plain(roofPage.asOf('2026-12-01T14:26:05.000Z', AT, 'UTC', null, false))).toBe('As of 14:26.');
+    expect(plain(roofPage.asOf('2026-11-30T14:26:05.000Z', AT, 'UTC', null, false))).toContain('30 Nov');
   });
   it('tells some stuck ones', () => {
     const words = said(roof({ passing: 94, shutdown: 2, stuck: 2 }));

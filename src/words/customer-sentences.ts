@@ -32,6 +32,9 @@ const has = (n: number): string => (n === 1 ? 'has' : 'have');
 
 export const isStale = (now: SharedNow): boolean => now.loggers === 0 || now.quietLoggers >= now.loggers;
 
+/** The newest word from the roof: what the page says is as of then, whenever it was read. */
+export const heardAt = (now: SharedNow): string => now.lastSpokeAt ?? now.at;
+
 function refusesToShutDown(now: SharedNow): string {
   if (now.notShuttingDown > 0)
     return `${number(now.notShuttingDown)} of ${counted(now.modules, 'module')} ${has(now.notShuttingDown)} not shut down`;
@@ -54,7 +57,12 @@ function modulesWords(now: SharedNow): string {
 const roofOf = (reader: Reader): string => (reader === 'owner' ? 'your roof' : 'this roof');
 const RoofOf = (reader: Reader): string => (reader === 'owner' ? 'Your roof' : 'This roof');
 
-function outputWords(now: SharedNow, reader: Reader): string {
+function outputWords(now: SharedNow, timeZone: string, reader: Reader): string {
+  if (now.power === null && now.madeLast) {
+    const { power: watts, at } = now.madeLast;
+    const made = watts < NOTHING_BELOW_W ? 'made no power' : `made ${power(watts)}`;
+    return `${RoofOf(reader)} ${made} at ${clockOrDate(at, now.at, timeZone)}; no reading of its power has come since.`;
+  }
   if (now.power === null) return `What ${roofOf(reader)} is making is not known just now.`;
   if (now.power < NOTHING_BELOW_W) return `${RoofOf(reader)} is making no power just now.`;
   return `${RoofOf(reader)} is making ${power(now.power)}.`;
@@ -88,12 +96,12 @@ function heading(now: SharedNow, timeZone: string, reader: Reader): string {
   if (total > 0 && gridLost === total) return `The grid is gone at ${roof}, so it makes no power.`;
   if (now.commands.length > 0) {
     const since = now.commands.map((c) => c.since).sort()[0] ?? now.at;
-    return `${outputWords(now, reader)} Part of it has been shut down since ${when(since)}.`;
+    return `${outputWords(now, timeZone, reader)} Part of it has been shut down since ${when(since)}.`;
   }
   if (!now.daylight) return `It is night at ${roof}: it rests until the sun is up.`;
   if (now.reporting > 0 && now.dark === now.reporting)
     return `Too little light reaches ${reader === 'owner' ? 'your' : 'the'} modules: ${roof} is waiting.`;
-  return `${outputWords(now, reader)} ${modulesWords(now)}`.trim();
+  return `${outputWords(now, timeZone, reader)} ${modulesWords(now)}`.trim();
 }
 
 /** What stands out beside the heading, most serious first. */

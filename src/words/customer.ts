@@ -1,5 +1,5 @@
 import { counted, energy, money, percent } from '../drawings/numbers';
-import { clock, longDate, zoneName } from '../drawings/times';
+import { clockOrDate, longDate, zoneName } from '../drawings/times';
 
 export const letterSheet = {
   noLetter: 'No letter',
@@ -48,8 +48,8 @@ export const roofPage = {
   handoverPapersPdf: 'Handover papers, PDF',
   earlierVersions: 'Earlier versions',
   versionOfPaper: (version: number, paper: string) => `Version ${version}, ${paper}`,
-  asOf: (at: string, timeZone: string, readerZone: null | string, at2: boolean) =>
-    `As of ${clock(at, timeZone)}${readerZone && at2 ? ` ${zoneName(at, timeZone)}, the time at the roof` : ''}.`,
+  asOf: (at: string, now: string, timeZone: string, readerZone: null | string, at2: boolean) =>
+    `As of ${clockOrDate(at, now, timeZone)}${readerZone && at2 ? ` ${zoneName(at, timeZone)}, the time at the roof` : ''}.`,
   notReadSince: ' It could not be read again since; the next try follows by itself.',
   rapidShutdown: 'Rapid shutdown',
   whoLooksAfterIt: 'Who looks after it',

@@ -188,6 +188,8 @@ export const siteFindingWords = {
   whatTheInvertersMake: 'What the inverters make is not known just now.',
   theInvertersMakeOf: (watts: number, acPowerMax: number) =>
     `The inverters make ${power(watts)} of ${power(acPowerMax)}.`,
+  theInvertersMadeOf: (watts: number, acPowerMax: number, at: string) =>
+    `The inverters made ${power(watts)} of ${power(acPowerMax)} at ${at}; no report since.`,
   here: 'here',
   nothingHasBeenReported: (reportedAt: string) => `Nothing has been reported since ${reportedAt}`,
   nothingHasBeenReportedYet: 'Nothing has been reported yet',

@@ -100,6 +100,40 @@ describe('today', () => {
   });
 });
 
+describe('the power', () => {
+  const at = new Date('2026-07-02T12:00:00Z');
+  /** What the first inverters of the clinic said, and how long ago. */
+  async function said(...reports: [watts: number, secondsAgo: number][]): Promise<void> {
+    for (const [i, [watts, ago]] of reports.entries())
+      await db.owner.query(
+        `insert into inverter_state (inverter_id, site_id, at, ac_power, status, arc_flag, earth_fault_flag)
+         select id, site_id, $2::timestamptz - $3 * interval '1 s', $4, 'producing', false, false
+         from inverter where site_id = $1 order by id offset $5 limit 1`,
+        [fleet.site(CLINIC).id, at, ago, watts, i],
+      );
+  }
+  beforeEach(() => db.owner.query('update site set report_interval_s = 60'));
+
+  it('is of now while it was reported within three intervals, and afterwards what it was and when', async () => {
+    await said([26_300, 170]);
+    expect((await read(owner, CLINIC, at)).now).toMatchObject({ power: 26_300, madeLast: null });
+    const later = await read(owner, CLINIC, new Date(at.getTime() + 11_000));
+    expect(later.now).toMatchObject({
+      power: null,
+      madeLast: { power: 26_300, at: new Date(at.getTime() - 170_000).toISOString() },
+    });
+    await db.owner.query('update site set report_interval_s = 300');
+    expect((await read(owner, CLINIC, new Date(at.getTime() + 10_000))).now.power).toBe(26_300);
+  });
+  it('leaves out an inverter that fell silent long before the others', async () => {
+    await said([20_000, 30], [6000, 3600]);
+    expect((await read(owner, CLINIC, at)).now.power).toBe(20_000);
+  });
+  it('is unknown where nothing was ever reported', async () => {
+    expect((await read(owner, CLINIC, at)).now).toMatchObject({ power: null, madeLast: null });
+  });
+});
+
 describe('month and life', () => {
   const at = new Date('2026-07-11T10:00:00Z');
   it('sum whole days and today, each day once', async () => {

@@ -33,6 +33,7 @@ export function site(name: string, some: Partial<SiteNow> = {}): SiteNow {
     counts: counts({ units: 100, passing: 100 }),
     strings: 8,
     power: 30_000,
+    madeLast: null,
     acPowerMax: 40_000,
     reportedAt: '2026-06-01T13:59:00.000Z',
     daylight: true,

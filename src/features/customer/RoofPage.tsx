@@ -20,7 +20,7 @@ import {
 } from './cards';
 import { FigureSheet } from '../../components/ui/FigureSheet';
 import { TodaySheet } from './TodaySheet';
-import { customerWords } from '../../words/customer-sentences';
+import { customerWords, heardAt } from '../../words/customer-sentences';
 import { roofPage } from '../../words/customer';
 
 /** How often the page reads itself again. */
@@ -134,6 +134,7 @@ export function RoofPage({ initial }: { initial: CustomerSite }) {
         </p>
         <p className="mt-2 text-sm text-ink-2">
           {roofPage.asOf(
+            heardAt(roof.now),
             roof.now.at,
             site.timeZone,
             readerZone,

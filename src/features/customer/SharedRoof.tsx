@@ -6,7 +6,7 @@ import { lifeCard, monthCard, yearCard } from './cards';
 import { FigureSheet } from '../../components/ui/FigureSheet';
 import { TodaySheet } from './TodaySheet';
 import { useShared } from './use-shared';
-import { customerWords } from '../../words/customer-sentences';
+import { customerWords, heardAt } from '../../words/customer-sentences';
 import { sharedRoof } from '../../words/shared-page';
 
 /** What is said where a link no longer works. */
@@ -33,6 +33,7 @@ export function SharedRoof({ token, initial }: { token: string; initial: SharedS
         </p>
         <p className="mt-2 text-sm text-ink-2">
           {sharedRoof.asOfAtReaderZone(
+            heardAt(now),
             now.at,
             timeZone,
             readerZone,

@@ -7,7 +7,7 @@ import { dayHours } from './day-hours';
 import { LINK_OVER } from './SharedRoof';
 import { dayLabel } from './TodaySheet';
 import { useShared } from './use-shared';
-import { customerWords } from '../../words/customer-sentences';
+import { customerWords, heardAt } from '../../words/customer-sentences';
 import { sharedScreen } from '../../words/shared-page';
 
 /** A screen that runs for months takes a new build of the page twice a day. */
@@ -41,7 +41,7 @@ export function SharedScreen({ token, initial }: { token: string; initial: Share
       <header className="flex flex-wrap items-baseline justify-between gap-x-8 text-[clamp(16px,1.35vw,30px)] leading-[1.3]">
         <span className="font-semibold tracking-[-0.02em]">{site.name}</span>
         <span className="text-ink-2">
-          {sharedScreen.lookedAfterByOrganisation(site.organisation, late, now.at, timeZone)}
+          {sharedScreen.lookedAfterByOrganisation(site.organisation, late, heardAt(now), now.at, timeZone)}
         </span>
       </header>
       <main

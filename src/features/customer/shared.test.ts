@@ -23,6 +23,7 @@ const now: fc.Arbitrary<SharedNow> = fc.record({
   unconfirmed: fc.constantFrom(0, 1, 3),
   stringsNotShuttingDown: fc.constantFrom(0, 0, 1),
   power: fc.constantFrom(null, 0, 31_000),
+  madeLast: fc.constantFrom(null, { power: 26_300, at: AT }),
   daylight: fc.boolean(),
   loggers: fc.constantFrom(0, 2),
   quietLoggers: fc.constantFrom(0, 1, 2),

@@ -28,10 +28,12 @@ function headingOf(verdict: CauseNow['verdict'], causes: readonly CauseNow[], si
   }
 }
 
-const making = ({ power: watts, acPowerMax }: SiteNow): string =>
-  watts === null
-    ? siteFindingWords.whatTheInvertersMake
-    : siteFindingWords.theInvertersMakeOf(watts, acPowerMax);
+const making = ({ power: watts, madeLast, acPowerMax }: SiteNow, at: (time: string) => string): string =>
+  watts !== null
+    ? siteFindingWords.theInvertersMakeOf(watts, acPowerMax)
+    : madeLast
+      ? siteFindingWords.theInvertersMadeOf(madeLast.power, acPowerMax, at(madeLast.at))
+      : siteFindingWords.whatTheInvertersMake;
 
 /** What holds at a site, as a heading, and what follows. Times in the site's zone. */
 export function siteFinding(
@@ -49,7 +51,7 @@ export function siteFinding(
         causes.filter((c) => c.verdict === worst),
         site,
       ),
-      sentence: `${WHAT_TO_DO[worst](siteFindingWords.here)} ${making(site)}`,
+      sentence: `${WHAT_TO_DO[worst](siteFindingWords.here)} ${making(site, at)}`,
     };
   if (!site.loggerConnected)
     return {
@@ -76,7 +78,7 @@ export function siteFinding(
   if (counts.units > 0 && counts.passing === counts.units)
     return {
       heading: siteFindingWords.allUnitsPass(counts.units),
-      sentence: siteFindingWords.nothingNeedsAttention(making(site)),
+      sentence: siteFindingWords.nothingNeedsAttention(making(site, at)),
     };
   const rest = [
     counts.dark > 0 ? siteFindingWords.inTheDark(countInside(counts.dark)) : '',
@@ -88,6 +90,6 @@ export function siteFinding(
       counts.passing > 0
         ? siteFindingWords.ofUnitsPass(counts.passing, counts.units)
         : siteFindingWords.nothingNeedsAttention2,
-    sentence: `${rest.length > 0 ? siteFindingWords.ofTheOthers(rest.join(', ')) : ''}${making(site)}`,
+    sentence: `${rest.length > 0 ? siteFindingWords.ofTheOthers(rest.join(', ')) : ''}${making(site, at)}`,
   };
 }

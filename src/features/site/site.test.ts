@@ -34,6 +34,21 @@ describe("a site's finding", () => {
     expect(siteFinding(school, [part], NOW).heading).toBe('Gateway 3 has fallen silent');
   });
 
+  it('tells what the inverters made as something past once they are no longer heard', () => {
+    const away = site('Depot', {
+      counts: counts({ units: 312, silent: 312 }),
+      power: null,
+      madeLast: { power: 71_600, at: '2026-06-01T13:50:05.000Z' },
+    });
+    const silent = cause('silent', 'Depot', [unitOf('C2', 3)]);
+    expect(siteFinding(away, [silent], NOW).sentence).toContain(
+      'The inverters made 71.6\u00a0kW of 40.0\u00a0kW at 13:50; no report since.',
+    );
+    expect(siteFinding({ ...away, madeLast: null }, [silent], NOW).sentence).toContain(
+      'is not known just now',
+    );
+  });
+
   it('says since when nothing is known, in the zone of the site', () => {
     const away = site('Depot', { loggerConnected: false, timeZone: 'Asia/Dubai' });
     expect(siteFinding(away, [], NOW).heading).toBe('Nothing has been reported since 17:59');

@@ -1,6 +1,6 @@
 import { z } from 'zod';
 import { EVERY } from '../../domain/output/letter-period';
-import { commandNow, id } from './now';
+import { commandNow, id, madeLast } from './now';
 
 /** What the page for the owner of a roof rests on. SI units; times ISO 8601 in UTC, days as 2026-11-03 at the site. */
 
@@ -23,7 +23,8 @@ export const customerNow = z.object({
   unconfirmed: z.int(),
   /** Strings found not to shut down where the position is unknown. */
   stringsNotShuttingDown: z.int(),
-  power: z.number().nullable(), // W, AC
+  power: z.number().nullable(), // W, AC; null: nothing is known of now
+  madeLast,
   daylight: z.boolean(),
   loggers: z.int(),
   quietLoggers: z.int(), // not heard for longer than they should be silent

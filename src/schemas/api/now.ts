@@ -133,6 +133,9 @@ export const eventItem = z.object({
 });
 export type EventItem = z.infer<typeof eventItem>;
 
+/** What inverters gave when they were last heard, where that is too long ago to be of now. */
+export const madeLast = z.object({ power: z.number(), at: time }).nullable(); // W, AC
+
 /** A site's line in lists, and what /live sends when something at the site changes. */
 export const siteNow = z.object({
   id,
@@ -142,7 +145,8 @@ export const siteNow = z.object({
   stage: z.enum(['commissioning', 'operating']),
   counts,
   strings: z.int(),
-  power: z.number().nullable(), // W, AC, sum of inverters
+  power: z.number().nullable(), // W, AC, sum of inverters; null: nothing is known of now
+  madeLast, // null: `power` is of now, or nothing was ever reported
   acPowerMax: z.number(), // W
   reportedAt: time.nullable(), // newest frame of the site
   daylight: z.boolean(), // sun above the horizon there

@@ -79,6 +79,9 @@ export async function invertersNow(tx: Tx, at: Date, siteId: number): Promise<In
 export const isSilent = (heard: Date | null, at: Date, reportIntervalS: number): boolean =>
   heard === null || at.getTime() - heard.getTime() > 3 * reportIntervalS * 1000;
 
+/** The same length of time in SQL, for a row of `site`. */
+export const SILENT_AFTER = `interval '3 s' * site.report_interval_s`;
+
 /** Gateways of a site. In the dark no unit reports, so a gateway that hears none is not silent. */
 export async function gatewaysNow(tx: Tx, at: Date, siteId: number): Promise<GatewayNow[]> {
   interface Row {

@@ -2,7 +2,7 @@ import { solarPositionQuick } from '../../domain/photovoltaics/sun/position-quic
 import type { CommandNow, Counts, SiteNow } from '../../schemas/api/now';
 import type { InForce } from '../../domain/verdicts/codes';
 import type { Tx } from '../db/transaction';
-import { isLightAt, isSilent } from './now';
+import { isLightAt, isSilent, SILENT_AFTER } from './now';
 import { SITE_VISIBLE } from './visible-site';
 
 interface Place {
@@ -26,6 +26,7 @@ interface Parts {
   units: BySite<number>;
   strings: BySite<number>;
   acPowerMax: BySite<number>;
+  /** What the inverters gave that were heard with the newest of them. */
   output: BySite<{ acPower: number | null; at: string }>;
   reportedAt: BySite<string>;
   zones: BySite<number>;
@@ -93,7 +94,11 @@ async function partsOf(tx: Tx, siteIds: readonly number[]): Promise<Parts> {
        ${bySite('w', `select site_id, sum(ac_power_max) as w from inverter where ${here}`)} as "acPowerMax",
        ${bySite(
          `json_build_object('acPower', w, 'at', at)`,
-         `select site_id, sum(ac_power) as w, max(at) as at from inverter_state where ${here}`,
+         // one that fell silent long before the others gives nothing that is known
+         `select site_id, sum(ac_power) filter (where newest - at <= silent_after) as w, max(at) as at
+          from (select i.site_id, i.ac_power, i.at, max(i.at) over (partition by i.site_id) as newest,
+                  ${SILENT_AFTER} as silent_after
+                from inverter_state i join site on site.id = i.site_id where i.${here}) heard`,
        )} as output,
        ${bySite('at', `select site_id, max(at) as at from string_state where ${here}`)} as "reportedAt",
        ${bySite('n', `select site_id, count(*) as n from zone where ${here}`)} as zones,
@@ -126,6 +131,7 @@ function siteOf(place: Place, parts: Parts, at: Date, performanceRatio: number |
   const zonesDown = commands.filter((c) => c.whereKind === 'zone');
   const zones = parts.zones[id] ?? 0;
   const output = parts.output[id];
+  const isNow = output !== undefined && !isSilent(new Date(output.at), at, place.reportIntervalS);
   const reportedAt = parts.reportedAt[id];
   const spokeAt = parts.spokeAt[id];
   const elevation = solarPositionQuick(at.getTime(), place).apparentElevation;
@@ -137,7 +143,11 @@ function siteOf(place: Place, parts: Parts, at: Date, performanceRatio: number |
     stage: place.stage,
     counts: { units: parts.units[id] ?? 0, ...(parts.judged[id] ?? NOTHING_JUDGED) },
     strings: parts.strings[id] ?? 0,
-    power: output && !isSilent(new Date(output.at), at, place.reportIntervalS) ? output.acPower : null,
+    power: isNow ? output.acPower : null,
+    madeLast:
+      output && !isNow && output.acPower !== null
+        ? { power: output.acPower, at: new Date(output.at).toISOString() }
+        : null,
     acPowerMax: parts.acPowerMax[id] ?? 0,
     reportedAt: reportedAt === undefined ? null : new Date(reportedAt).toISOString(),
     daylight: elevation > 0,

@@ -49,6 +49,7 @@ function nowOf(roof: RoofRow, site: SiteNow, at: Date): CustomerNow {
     unconfirmed: site.counts.unconfirmed,
     stringsNotShuttingDown: roof.stringsNotShuttingDown,
     power: site.power,
+    madeLast: site.madeLast,
     daylight: site.daylight,
     loggers: roof.loggers,
     quietLoggers: roof.quietLoggers,
