@@ -116,11 +116,13 @@ function ask(route: Route, who: Who, target: Target): Promise<Response> {
     body: route.body === undefined ? undefined : JSON.stringify(bodyOf(route, target)),
   });
 }
+const goesElsewhere = (route: Route, who: Who): boolean =>
+  who === 'customer' && route.customerGoesTo !== undefined;
 /** What the table of permissions says of it. */
 function expected(route: Route, who: Who, where: string): readonly number[] {
   if (route.permission === 'public') return route.served;
   if (!isInside(who)) return isPage(route) ? [303] : [401];
-  if (!mayUse(who, route.permission)) return [403];
+  if (!mayUse(who, route.permission)) return [goesElsewhere(route, who) ? 303 : 403];
   if (route.of === 'nothing') return route.served;
   const seen = where === GIVEN || (where === NOT_GIVEN && who !== 'customer');
   return seen ? route.served : [404];
@@ -146,6 +148,7 @@ describe.each<Who>([...ROLES, ...OUTSIDE])('%s', (who) => {
     );
     if (route.permission !== 'public' && !isInside(who) && isPage(route))
       expect(response.headers.get('location')).toMatch(/^\/sign-in(\?next=|$)/);
+    if (goesElsewhere(route, who)) expect(response.headers.get('location')).toBe(route.customerGoesTo);
     // what a person may not see is not in any answer, whatever was asked
     if (isInside(who)) {
       expect(body).not.toContain(FOREIGN);

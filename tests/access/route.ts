@@ -18,6 +18,8 @@ export interface Route {
   body?: unknown;
   /** Statuses that mean that somebody who may was served. */
   served: readonly number[];
+  /** Where a customer is sent, who may not; left out: refused. */
+  customerGoesTo?: string;
 }
 
 /** A GET of which nothing but the address is sent. */

@@ -32,7 +32,7 @@ export const ROUTES: readonly Route[] = [
   ...WORKBENCH,
   ...FIGURES,
   // pages
-  get('index.astro', 'fleet.read', 'nothing', () => '/'),
+  { ...get('index.astro', 'fleet.read', 'nothing', () => '/'), customerGoesTo: '/my-site' },
   get('shutdown.astro', 'shutdown.read', 'nothing', () => '/shutdown'),
   get('status.astro', 'status.read', 'nothing', () => '/status'),
   get('try-a-reading.astro', 'reading.try', 'nothing', () => '/try-a-reading'),
