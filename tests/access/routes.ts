@@ -64,7 +64,7 @@ export const ROUTES: readonly Route[] = [
   get('my-site/[site].astro', 'customer_page.read', 'site', (t) => `/my-site/${t.site}`),
   get('sign-in.astro', 'public', 'nothing', () => '/sign-in', [200, 303]),
   get('404.astro', 'public', 'nothing', () => '/404', [404]),
-  get('500.astro', 'public', 'nothing', () => '/500', [500]),
+  get('500.astro', 'public', 'nothing', () => '/500', [404]),
   get('problem.astro', 'public', 'nothing', () => '/problem', [404]),
   // API
   {
