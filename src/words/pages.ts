@@ -1,4 +1,4 @@
-import { clockSeconds } from '../drawings/times';
+import { clockSeconds, zoneName } from '../drawings/times';
 export const jobsPageWords = {
   backgroundJobs: 'Background jobs',
 };
@@ -67,7 +67,7 @@ export const sitesSiteHistoryImportPage = {
 
 export const statusPage = {
   lookAgain: 'Look again',
-  asOf: (at: string, timeZone: string) => `As of ${clockSeconds(at, timeZone)}. `,
+  asOf: (at: string, timeZone: string) => `As of ${clockSeconds(at, timeZone)} ${zoneName(at, timeZone)}. `,
   notRead: 'It could not be read again since then: what has happened meanwhile is not known.',
 };
 

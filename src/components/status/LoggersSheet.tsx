@@ -14,7 +14,7 @@ type Logger = InstallationStatus['loggers'][number];
 const OPEN = 20;
 
 /** Loggers with what was refused from each, the newest refusal first. */
-export function LoggersSheet({ status }: { status: InstallationStatus }) {
+export function LoggersSheet({ status, timeZone }: { status: InstallationStatus; timeZone: string }) {
   const { at: now, loggers } = status;
   const columns: Column<Logger>[] = [
     {
@@ -42,7 +42,7 @@ export function LoggersSheet({ status }: { status: InstallationStatus }) {
             </Tag>
           )}{' '}
           <span className="whitespace-nowrap">
-            <When at={l.lastSpokeAt} now={now} timeZone={l.timeZone} />
+            <When at={l.lastSpokeAt} now={now} timeZone={timeZone} />
           </span>
         </>
       ),
@@ -67,7 +67,7 @@ export function LoggersSheet({ status }: { status: InstallationStatus }) {
           <>
             <code className="font-sans font-semibold">{l.lastRefusal.field}</code>: {l.lastRefusal.reason}
             <span className="block text-sm text-ink-2">
-              <When at={l.lastRefusal.at} now={now} timeZone={l.timeZone} />
+              <When at={l.lastRefusal.at} now={now} timeZone={timeZone} />
             </span>
           </>
         ) : (

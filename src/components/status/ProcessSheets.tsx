@@ -1,12 +1,12 @@
 import { MinuteLines } from '../../drawings/MinuteLines';
 import { listed } from '../../drawings/numbers';
-import { ago, fullTime } from '../../drawings/times';
 import { HISTORY_HOURS, type HistoryHours, type ProcessHistory } from '../../schemas/api/processes';
 import { paths } from '../../schemas/paths';
 import { Notice } from '../ui/Notice';
 import { Sheet } from '../ui/Sheet';
 import { isQuiet, lineOf, MARK_WORDS, marksOf, newest, PICTURES, type Picture } from './process-lines';
 import { processSheets } from '../../words/status';
+import { When } from './When';
 
 interface Shown {
   history: ProcessHistory;
@@ -65,9 +65,7 @@ function Process(shown: Shown) {
       aside={
         <>
           {processSheets.numberRunsSince(history.pid)}
-          <time dateTime={history.startedAt} title={fullTime(history.startedAt, timeZone)}>
-            {ago(history.startedAt, nowAt)}
-          </time>
+          <When at={history.startedAt} now={nowAt} timeZone={timeZone} />
         </>
       }
     >
@@ -130,9 +128,7 @@ export function ProcessSheets({ histories, hours, at, timeZone }: Props) {
               <span key={h.process}>
                 {i > 0 && '; '}
                 {processSheets.onLastHeard(h.process.slice(0, 8), h.host, listed(h.roles))}
-                <time dateTime={last} title={fullTime(last, timeZone)}>
-                  {ago(last, at)}
-                </time>
+                <When at={last} now={at} timeZone={timeZone} />
               </span>
             );
           })}

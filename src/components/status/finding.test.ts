@@ -1,5 +1,9 @@
+import { createElement } from 'react';
+import { renderToStaticMarkup } from 'react-dom/server';
 import { describe, expect, it } from 'vitest';
 import type { InstallationStatus } from '../../schemas/api/status';
+import { LoggersSheet } from './LoggersSheet';
+import { StatusSheets } from './StatusSheets';
 import { statusFinding } from './finding';
 
 const AT = '2026-06-01T14:00:00.000Z';
@@ -35,6 +39,15 @@ const status = (some: Partial<InstallationStatus> = {}): InstallationStatus => (
   ...some,
 });
 const work = (some: Partial<InstallationStatus['work']>) => status({ work: { ...status().work, ...some } });
+
+it('what a page says that stands open is instants, which stay true, in one zone', () => {
+  const shown = { status: status({ loggers: [logger('A', { timeZone: 'Asia/Dubai' })] }), timeZone: 'UTC' };
+  for (const sheet of [StatusSheets, LoggersSheet]) {
+    const html = renderToStaticMarkup(createElement(sheet, shown));
+    expect(html).toContain('>14:00:00</time>');
+    expect(html).not.toMatch(/>just now<| ago</);
+  }
+});
 
 describe('how an installation runs', () => {
   it('says so when all is well, with what was refused', () => {
