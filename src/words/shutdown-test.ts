@@ -1,5 +1,7 @@
-import { volts } from '../drawings/numbers';
+import { listed, volts } from '../drawings/numbers';
 import { clock, clockSeconds } from '../drawings/times';
+import { counted } from './domain-counts';
+import { isOne } from './language';
 
 export const cautionStep = {
   enterYourName: 'Enter your name.',
@@ -254,6 +256,9 @@ export const shutdownTestRound = {
   offAlone: (transmitter: string) => `${transmitter} off alone`,
 };
 
+const theStrings = (names: readonly string[] | null, live: number, of: number): string =>
+  names ? listed(names) : `${live} of ${counted(of, 'string')}`;
+
 export const shutdownTestWords = {
   theTestOfWas: (zone: string) => `The test of ${zone} was ended without a signature`,
   itCountsAsNo: 'It counts as no test. What was written stays readable.',
@@ -278,8 +283,14 @@ export const shutdownTestWords = {
   startWatchingFirstThen: 'Start watching first; then a person operates it by hand.',
   roundIsOver: (step: number, name: string) => `Round ${step + 1} is over: ${name}`,
   goOnWithThe: 'Go on with the next round, repeat this one, or look at the verdict.',
-  didNotShutDown: (live: string) => `${live} did not shut down`,
-  treatAsLiveRelease: 'Treat as live. Release, end the round, and find the cause before anybody works there.',
+  didNotShutDown: (names: readonly string[] | null, live: number, of: number) =>
+    `${theStrings(names, live, of)} did not shut down`,
+  stillAbove: (names: readonly string[] | null, live: number, of: number, limitV: number | null) =>
+    `${theStrings(names, live, of)} ${isOne(live) ? 'is' : 'are'} still above ${limitV === null ? 'their limits' : volts(limitV)}`,
+  notDown: (names: readonly string[] | null, live: number, of: number) =>
+    `${theStrings(names, live, of)} ${isOne(live) ? 'has' : 'have'} not come down`,
+  treatAsLiveRelease: (unknown: number, afterS: number) =>
+    `Treat every string as live.${unknown === 0 ? '' : ` Of ${counted(unknown, 'string')} nothing is known since the ${afterS} s.`} Release, end the round, and find the cause before anybody works there.`,
   watchingWaitingForPerson: (zone: string, operated: string) =>
     `Watching ${zone}: waiting for a person to operate ${operated}`,
   readToOfEach: 'Read + to − of each home run first: only a string that was live can be shown dead.',

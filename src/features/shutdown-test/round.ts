@@ -9,6 +9,7 @@ import type {
   TestRound,
   Voltages,
 } from '../../domain/commissioning/shutdown-test-record';
+import type { TestVerdict } from '../../domain/commissioning/shutdown-test-verdict';
 import type { TestLine } from '../../drawings/TestLines';
 import { shutdownTestRound } from '../../words/shutdown-test';
 
@@ -113,6 +114,42 @@ export function stringsOfRound(
         readings: round.readings.filter((r) => r.string === part.id),
       };
     });
+}
+
+export interface LiveNow {
+  name: string;
+  limitV: number;
+  /** Its newest voltage stands over its limit, wherever it was measured. */
+  above: boolean;
+  /** A unit was seen to pass past the limit, or an instrument read too much. */
+  failed: boolean;
+}
+
+/** Strings of a round that are not down past the time limit, and those of which nothing was reported since. */
+export function liveStrings(
+  strings: readonly StringNow[],
+  verdict: TestVerdict,
+  round: number,
+): { live: LiveNow[]; unknown: string[] } {
+  const { afterS } = verdict.limits;
+  const past = strings.map((s) => {
+    const { newest } = s;
+    const known = newest !== null && newest.afterS >= afterS;
+    const judged = verdict.strings.find((v) => v.string === s.part.id)?.rounds.find((r) => r.round === round);
+    return {
+      name: s.part.name,
+      limitV: s.limitV,
+      known: known || s.readings.some((r) => r.struck === null && (r.afterS ?? 0) >= afterS),
+      above: known && newest.volts > s.limitV,
+      failed:
+        judged?.result === 'failed' ||
+        (s.conduct?.units.some((u) => u.passedAtS !== null && u.passedAtS >= afterS) ?? false),
+    };
+  });
+  return {
+    live: past.flatMap(({ known: _, ...s }) => (s.above || s.failed ? [s] : [])),
+    unknown: past.flatMap((s) => (s.known || s.above || s.failed ? [] : [s.name])),
+  };
 }
 
 /** The strings of a round as lines; one above its limit past the time limit may be live. */

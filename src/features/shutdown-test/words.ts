@@ -1,6 +1,13 @@
-import { openRound, type TestRecord } from '../../domain/commissioning/shutdown-test-record';
+import type { TestRecord } from '../../domain/commissioning/shutdown-test-record';
 import type { ShutdownTestPage } from '../../schemas/api/shutdown-test';
-import { operatedName, roundName } from './round';
+import {
+  liveStrings,
+  operatedName,
+  roundName,
+  stringsConcerned,
+  stringsOfRound,
+  type LiveNow,
+} from './round';
 import { shutdownTestWords } from '../../words/shutdown-test';
 
 export interface StepWords {
@@ -65,11 +72,17 @@ export function stepWords(
       heading: shutdownTestWords.roundIsOver(step, name),
       sentence: shutdownTestWords.goOnWithThe,
     };
-  const live = verdict.treatAsLive.map((s) => s.name);
-  if (live.length > 0 && openRound(record) === step)
+  const strings = stringsOfRound(
+    facts,
+    stringsConcerned(facts, record.plan?.strings ?? [], round.transmitter),
+    round,
+    page.evidence[step],
+  );
+  const { live, unknown } = liveStrings(strings, verdict, step);
+  if (live.length > 0)
     return {
-      heading: shutdownTestWords.didNotShutDown(live.join(', ')),
-      sentence: shutdownTestWords.treatAsLiveRelease,
+      heading: liveHeading(live, strings.length),
+      sentence: shutdownTestWords.treatAsLiveRelease(unknown.length, verdict.limits.afterS),
     };
   if (!round.operated)
     return {
@@ -85,4 +98,16 @@ export function stepWords(
     heading: shutdownTestWords.releasedWatchComeBack(zone),
     sentence: shutdownTestWords.unitsThatDoNot,
   };
+}
+
+/** So many strings are named; of more only the number says that none is left out. */
+const NAMED = 3;
+
+function liveHeading(live: readonly LiveNow[], of: number): string {
+  const names = live.length <= NAMED ? live.map((s) => s.name) : null;
+  if (live.every((s) => s.failed)) return shutdownTestWords.didNotShutDown(names, live.length, of);
+  const limits = new Set(live.map((s) => s.limitV));
+  return live.every((s) => s.above)
+    ? shutdownTestWords.stillAbove(names, live.length, of, limits.size === 1 ? live[0]!.limitV : null)
+    : shutdownTestWords.notDown(names, live.length, of);
 }
