@@ -1,6 +1,6 @@
 import { listed, volts } from '../drawings/numbers';
 import { clock, clockSeconds } from '../drawings/times';
-import { counted } from './domain-counts';
+import { counted, figure } from './domain-counts';
 import { isOne } from './language';
 
 export const cautionStep = {
@@ -41,6 +41,10 @@ export const guidedTest = {
   nothingIsPlannedYet: 'Nothing is planned yet',
   acceptedBy: (caution: string) => `Accepted by ${caution}`,
   notAcceptedYet: 'Not accepted yet',
+  haveNotAnswered: (unheard: number, units: number) =>
+    `${figure(unheard)} of ${counted(units, 'unit')} ${isOne(unheard) ? 'has' : 'have'} not answered the roll call.`,
+  theyWillNotFollow:
+    'According to the type entered, such a unit passes full voltage and does not follow the initiator. Treat every string as live.',
   shutdownIsNotIsolation: 'Shutdown is not isolation. Wakeline switches nothing; a person does.',
   treatEveryConductorAs: 'Treat every conductor as live.',
   goToTheVerdict: 'Go to the verdict',

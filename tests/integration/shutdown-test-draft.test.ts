@@ -39,6 +39,29 @@ describe('a draft', () => {
     expect(seen.others[0]!.name).not.toBe('Bram Ottersley');
   });
 
+  it('counts the units of its strings that pass because they have not answered the roll call', async () => {
+    const ref = await scene.startTest();
+    const zone = (await scene.page(ref)).unheard;
+    expect(zone.unheard).toBe(zone.units); // nothing has reported here
+    await scene.add(ref, { kind: 'planned', plan: planOf([scene.refOf('A1')]) }, scene.after(0));
+    const { units, unheard } = (await scene.page(ref)).unheard;
+    expect(unheard).toBe(units);
+    expect(units).toBeLessThan(zone.units);
+    const { rowCount } = await scene.db.owner.query(
+      `insert into heard (site_id, serial, unit_id, logger_id, gateway_number, first_heard_at, last_heard_at)
+       select s.site_id, unit.serial, unit.id, s.logger_id, 1, now(), now() from string s join slot on slot.string_id = s.id
+       join placement p on p.slot_id = slot.id and p.placed_to is null join unit on unit.id = p.unit_id
+       where s.ref = $1 and slot.position <= 3`,
+      [scene.refOf('A1')],
+    );
+    expect(rowCount).toBe(3);
+    expect((await scene.page(ref)).unheard).toEqual({ units, unheard: units - 3 });
+    await scene.db.owner.query('delete from heard');
+    await scene.db.owner.query(`update unit_type set out_of_box = 'shutdown'`);
+    expect((await scene.page(ref)).unheard.unheard).toBe(0);
+    await scene.db.owner.query(`update unit_type set out_of_box = 'passing'`);
+  });
+
   it('takes the same act twice once', async () => {
     const ref = await scene.startTest();
     const act = sent({ kind: 'planned', plan: planOf([scene.refOf('A1')]) }, scene.after(0));

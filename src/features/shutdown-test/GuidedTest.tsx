@@ -79,6 +79,13 @@ export function GuidedTest({ initial, person, mayRun }: Props) {
         sentence={words.sentence}
       />
       <Told test={test} />
+      {page.state === 'draft' && page.unheard.unheard > 0 && (
+        <div className="mb-5">
+          <Caution strong={guidedTest.haveNotAnswered(page.unheard.unheard, page.unheard.units)}>
+            {guidedTest.theyWillNotFollow}
+          </Caution>
+        </div>
+      )}
       <div className="grid gap-5 lg:grid-cols-[220px_minmax(0,1fr)]">
         <nav aria-label={guidedTest.stepsOfTheTest} className="no-print">
           <ol className="flex flex-wrap gap-x-2 lg:block">

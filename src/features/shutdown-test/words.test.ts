@@ -111,6 +111,7 @@ function pageOf(
     evidence,
     verdict: judgeTest(facts, record, evidence),
     watch: { canWatch: true, words: '', newestAt: null, inForce: [] },
+    unheard: { unheard: 0, units: 0 },
     fingerprint: '',
     others: [],
   };

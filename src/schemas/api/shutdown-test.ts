@@ -162,6 +162,8 @@ export interface ShutdownTestPage {
   evidence: RoundEvidence[];
   verdict: TestVerdict;
   watch: Watch;
+  /** Of the strings planned (before that: of the zone), units that pass until they answer the roll call. */
+  unheard: { unheard: number; units: number };
   /** Of what would be signed now, less name and time. */
   fingerprint: string;
   /** Other people who wrote to this test in the last half hour. */

@@ -247,6 +247,22 @@ export async function newestReports(
   return { frames: rows[0]?.frames ?? null, inputs: rows[0]?.inputs ?? null, loggers: loggers.rows };
 }
 
+/** Units of these strings that pass until they have answered the roll call, and how many of them have not. */
+export async function unheardUnits(
+  tx: Tx,
+  stringIds: readonly number[],
+): Promise<{ unheard: number; units: number }> {
+  const { rows } = await tx.raw<{ rows: { unheard: number; units: number }[] }>(
+    `select count(p.id)::int as units, count(p.id) filter (where not exists (
+              select from heard h where h.unit_id = p.unit_id and h.site_id = s.site_id))::int as unheard
+     from string s join unit_type u on u.id = s.unit_type_id
+     join slot on slot.string_id = s.id join placement p on p.slot_id = slot.id and p.placed_to is null
+     where s.id = any (?::int4[]) and s.kind <> 'shutdown_only' and u.out_of_box = 'passing'`,
+    [[...stringIds]],
+  );
+  return rows[0] ?? { unheard: 0, units: 0 };
+}
+
 /** The number of a zone of a site by its public identifier. */
 export async function zoneOf(
   tx: Tx,

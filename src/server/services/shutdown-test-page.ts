@@ -11,7 +11,7 @@ import {
   type InForce,
   type TestHead,
 } from '../queries/shutdown-tests';
-import { watchedZone, type WatchedZone } from '../queries/shutdown-test-evidence';
+import { unheardUnits, watchedZone, type WatchedZone } from '../queries/shutdown-test-evidence';
 import { visibleSite, type VisibleSite } from '../queries/visible-site';
 import { fingerprintOf } from '../reports/fingerprint';
 import { signedContent } from './shutdown-test-content';
@@ -120,6 +120,10 @@ export async function shutdownTestPage(
     evidence,
     verdict,
     watch: await readWatch(tx, zone, now),
+    unheard: await unheardUnits(
+      tx,
+      zone.strings.filter((s) => record.plan?.strings.includes(s.part.id) ?? true).map((s) => s.dbId),
+    ),
     fingerprint: fingerprintOf(content),
     others: [...others].map(([name, at]) => ({ name, at })),
   };
