@@ -192,10 +192,12 @@ export const roundStep = {
     `${what === initiator ? 'Initiator' : what} ${verb} now: note the time`,
   transmitterNullInitiatorReleased: (transmitter: null | string, what: string) =>
     `${transmitter === null ? 'Initiator released' : `${what} running`} again now: note the time`,
+  beforeARelease:
+    'Before anybody releases: everyone off the roof and away from the conductors. The strings come back to full voltage.',
   takeTheNotedTime: (verb: string) => `Take the noted time back: it was not ${verb} yet`,
   noUnitToldThat: 'No unit told that it went, so none can tell that it came back.',
   backOfGoneUnits: (back: number, gone: number, held: number) =>
-    `${back} of ${gone} units that went have come back${held > 0 ? `; ${held} are still in shutdown` : ''}.`,
+    `${back} of ${gone} units that went have come back${held > 0 ? `; ${held} ${isOne(held) ? 'is' : 'are'} still in shutdown` : ''}.`,
   giveThemAFew: 'Give them a few reports. What does not come back is stuck: the verdict names it.',
   endThisRound: 'End this round',
   beforeTheCommand: 'Before the command',
@@ -293,8 +295,10 @@ export const shutdownTestWords = {
     `${theStrings(names, live, of)} ${isOne(live) ? 'is' : 'are'} still above ${limitV === null ? 'their limits' : volts(limitV)}`,
   notDown: (names: readonly string[] | null, live: number, of: number) =>
     `${theStrings(names, live, of)} ${isOne(live) ? 'has' : 'have'} not come down`,
+  didNotComeDown: (names: readonly string[] | null, live: number, of: number) =>
+    `${theStrings(names, live, of)} did not come down in time`,
   treatAsLiveRelease: (unknown: number, afterS: number) =>
-    `Treat every string as live.${unknown === 0 ? '' : ` Of ${counted(unknown, 'string')} nothing is known since the ${afterS} s.`} Release, end the round, and find the cause before anybody works there.`,
+    `Treat every string as live.${unknown === 0 ? '' : ` Of ${counted(unknown, 'string')} nothing is known since the ${afterS} s.`} Clear the roof, then release, end the round, and find the cause before anybody works there.`,
   watchingWaitingForPerson: (zone: string, operated: string) =>
     `Watching ${zone}: waiting for a person to operate ${operated}`,
   readToOfEach: 'Read + to − of each home run first: only a string that was live can be shown dead.',
@@ -303,5 +307,6 @@ export const shutdownTestWords = {
   plusMinusAndEarth: (afterS: number) =>
     `+ to −, + to earth and − to earth at the inverter’s end, within ${afterS} s.`,
   releasedWatchComeBack: (zone: string) => `Released: watch ${zone} come back`,
+  liveAgain: 'Every string is live again. End the round, and find the cause before anybody works there.',
   unitsThatDoNot: 'Units that do not come back are stuck; the verdict names them.',
 };

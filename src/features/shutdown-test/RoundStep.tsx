@@ -17,6 +17,7 @@ import {
   roundName,
   stringsConcerned,
   stringsOfRound,
+  tapsOpen,
   type StringNow,
 } from './round';
 import type { TestInHand } from './use-test';
@@ -56,6 +57,7 @@ export function RoundStep({ test, index, mayWrite, onEnded }: Props) {
     [originS, serverNow],
   );
   const released = round.released !== null || Boolean(seen?.release);
+  const taps = tapsOpen(round, seen, now / 1000);
   const what = operatedName(facts, round.transmitter);
   const verb = round.transmitter === null ? roundStep.operated : roundStep.takenOff;
   const back = returnOf(seen);
@@ -125,7 +127,7 @@ export function RoundStep({ test, index, mayWrite, onEnded }: Props) {
         </dl>
         {mayWrite && !round.ended && (
           <div className="mt-4 grid gap-2">
-            {!round.operated && (
+            {taps.operated && (
               <>
                 <p>
                   {round.transmitter === null ? (
@@ -147,19 +149,24 @@ export function RoundStep({ test, index, mayWrite, onEnded }: Props) {
                 </Button>
               </>
             )}
-            {round.operated && !round.released && (
+            {taps.released && (
               <>
+                <p>
+                  <strong className="font-semibold">{roundStep.beforeARelease}</strong>
+                </p>
                 <Button className="w-full" onClick={() => act({ kind: 'released', round: index })}>
                   {roundStep.transmitterNullInitiatorReleased(round.transmitter, what)}
                 </Button>
-                <button
-                  type="button"
-                  className="target justify-self-start text-sm text-petrol underline underline-offset-2"
-                  onClick={() => act({ kind: 'operated_withdrawn', round: index })}
-                >
-                  {roundStep.takeTheNotedTime(verb)}
-                </button>
               </>
+            )}
+            {round.operated && !round.released && (
+              <button
+                type="button"
+                className="target justify-self-start text-sm text-petrol underline underline-offset-2"
+                onClick={() => act({ kind: 'operated_withdrawn', round: index })}
+              >
+                {roundStep.takeTheNotedTime(verb)}
+              </button>
             )}
             {released && (
               <div className="border-t border-rule-faint pt-3">

@@ -32,6 +32,25 @@ export function releasedAfterS(round: TestRound, seen: RoundEvidence | undefined
   return from === null || times.length === 0 ? null : Math.min(...times) - from;
 }
 
+/** What the logger has reported so long ago a person no longer notes: a later tap would tell a wrong time. */
+const TAP_S = 15;
+
+/** Which times a person may still note by a tap. */
+export function tapsOpen(
+  round: TestRound,
+  seen: RoundEvidence | undefined,
+  nowS: number,
+): { operated: boolean; released: boolean } {
+  const fresh = (since: string | undefined): boolean =>
+    since === undefined || nowS - secondsOf(since) <= TAP_S;
+  const begun = round.operated !== null || Boolean(seen?.command);
+  return {
+    operated:
+      round.operated === null && round.released === null && !seen?.release && fresh(seen?.command?.since),
+    released: begun && round.released === null && fresh(seen?.release?.since),
+  };
+}
+
 /** The trace that says most of a string: at the home run, else its units' sum, else the input. */
 export function bestTrace(conduct: StringConduct, fromS: number): EvidenceTrace | undefined {
   return conduct.traces
@@ -130,17 +149,21 @@ export function liveStrings(
   strings: readonly StringNow[],
   verdict: TestVerdict,
   round: number,
+  releaseS: number | null,
 ): { live: LiveNow[]; unknown: string[] } {
   const { afterS } = verdict.limits;
   const past = strings.map((s) => {
-    const { newest } = s;
-    const known = newest !== null && newest.afterS >= afterS;
+    // what comes back after the release is no failure
+    const newest = s.points.findLast(
+      (p): p is [number, number] => p[1] !== null && p[0] >= afterS && (releaseS === null || p[0] < releaseS),
+    );
+    const known = newest !== undefined;
     const judged = verdict.strings.find((v) => v.string === s.part.id)?.rounds.find((r) => r.round === round);
     return {
       name: s.part.name,
       limitV: s.limitV,
       known: known || s.readings.some((r) => r.struck === null && (r.afterS ?? 0) >= afterS),
-      above: known && newest.volts > s.limitV,
+      above: known && newest[1] > s.limitV,
       failed:
         judged?.result === 'failed' ||
         (s.conduct?.units.some((u) => u.passedAtS !== null && u.passedAtS >= afterS) ?? false),

@@ -5,7 +5,8 @@ import { idOf } from '../../../tests/support/now';
 import { LIST_DEFAULTS, listFinding, listedTests } from './list';
 import { formOf } from './plan-form';
 import { readPlan } from './read-plan';
-import { linesOf, returnOf, roundsNeeded, stringsConcerned, stringsOfRound } from './round';
+import { linesOf, returnOf, roundsNeeded, stringsConcerned, stringsOfRound, tapsOpen } from './round';
+import { roundStep } from '../../words/shutdown-test';
 
 const zone = (name: string, more: Partial<ZoneStanding> = {}): ZoneStanding => ({
   zone: { id: idOf(name), name },
@@ -253,6 +254,22 @@ describe('a round in figures', () => {
     expect(linesOf(rows(seen([400, 8, 8, 410]), { ...round, released: stamp(3) }), 1, 3)[0]!.tone).toBe(
       'fallen',
     );
+  });
+  it('lets a person note a time only until the logger has reported it', () => {
+    const began = Date.parse('2026-06-01T10:00:00Z') / 1000;
+    const untapped = { ...round, operated: null };
+    const silent: RoundEvidence = { ...seen([]), command: null };
+    const released: RoundEvidence = { ...seen([]), release: { since: at(120) } };
+    expect(tapsOpen(untapped, silent, began + 500)).toEqual({ operated: true, released: false });
+    expect(tapsOpen(untapped, seen([]), began + 5)).toEqual({ operated: true, released: true });
+    expect(tapsOpen(untapped, seen([]), began + 60)).toEqual({ operated: false, released: true });
+    expect(tapsOpen(untapped, released, began + 125)).toEqual({ operated: false, released: true });
+    expect(tapsOpen(round, released, began + 180)).toEqual({ operated: false, released: false });
+    expect(tapsOpen({ ...untapped, released: stamp(60) }, silent, began + 61).operated).toBe(false);
+  });
+  it('says of one unit that it is, of two that they are in shutdown', () => {
+    expect(roundStep.backOfGoneUnits(3, 4, 1)).toMatch(/; 1 is still in shutdown\.$/);
+    expect(roundStep.backOfGoneUnits(2, 4, 2)).toMatch(/; 2 are still in shutdown\.$/);
   });
   it('counts who came back', () => {
     const unit = (position: number, returned: [number, number] | null, heldAtS: number | null) => ({

@@ -152,4 +152,30 @@ describe('the finding while a round is watched', () => {
       'Main initiator was operated: read the home runs',
     );
   });
+  it('tells of the release by tap or report before what did not shut down, and still tells that', () => {
+    const strings = { A1: held(8), A3: { ...held(300), units: [passing] } };
+    for (const page of [
+      pageOf(strings, { released: stamp(90) }),
+      pageOf(strings, {}, { release: { since: at(90) } }),
+    ])
+      expect(said(page)).toMatchObject({
+        heading: 'Released: watch Zone 1 come back',
+        sentence: expect.stringMatching(/^A3 did not shut down\. Every string is live again\./) as string,
+      });
+    expect(said(pageOf(strings)).sentence).toContain('Clear the roof, then release');
+  });
+  it('takes what comes back after the release for no failure', () => {
+    const back: Partial<StringConduct> = {
+      inputs: [
+        [45, 8],
+        [100, 410],
+      ],
+    };
+    const { sentence } = said(pageOf({ A1: back, A2: back }, { released: stamp(90) }));
+    expect(sentence).toBe('Units that do not come back are stuck; the verdict names them.');
+    const up = { A1: back, ...many(4, held(410)) };
+    expect(said(pageOf(up, { released: stamp(90) })).sentence).toMatch(
+      /^4 of 5 strings did not come down in time\. Every/,
+    );
+  });
 });

@@ -3,6 +3,7 @@ import type { ShutdownTestPage } from '../../schemas/api/shutdown-test';
 import {
   liveStrings,
   operatedName,
+  releasedAfterS,
   roundName,
   stringsConcerned,
   stringsOfRound,
@@ -78,7 +79,17 @@ export function stepWords(
     round,
     page.evidence[step],
   );
-  const { live, unknown } = liveStrings(strings, verdict, step);
+  const releaseS = releasedAfterS(round, page.evidence[step]);
+  const { live, unknown } = liveStrings(strings, verdict, step, releaseS);
+  const released = round.released !== null || Boolean(page.evidence[step]?.release);
+  if (released)
+    return {
+      heading: shutdownTestWords.releasedWatchComeBack(zone),
+      sentence:
+        live.length === 0
+          ? shutdownTestWords.unitsThatDoNot
+          : `${liveHeading(live, strings.length, true)}. ${shutdownTestWords.liveAgain}`,
+    };
   if (live.length > 0)
     return {
       heading: liveHeading(live, strings.length),
@@ -89,23 +100,19 @@ export function stepWords(
       heading: shutdownTestWords.watchingWaitingForPerson(zone, operatedName(facts, round.transmitter)),
       sentence: shutdownTestWords.readToOfEach,
     };
-  if (!round.released)
-    return {
-      heading: shutdownTestWords.wasOperatedReadThe(round.transmitter, facts.initiator.name, name),
-      sentence: shutdownTestWords.plusMinusAndEarth(verdict.limits.afterS),
-    };
   return {
-    heading: shutdownTestWords.releasedWatchComeBack(zone),
-    sentence: shutdownTestWords.unitsThatDoNot,
+    heading: shutdownTestWords.wasOperatedReadThe(round.transmitter, facts.initiator.name, name),
+    sentence: shutdownTestWords.plusMinusAndEarth(verdict.limits.afterS),
   };
 }
 
 /** So many strings are named; of more only the number says that none is left out. */
 const NAMED = 3;
 
-function liveHeading(live: readonly LiveNow[], of: number): string {
+function liveHeading(live: readonly LiveNow[], of: number, released = false): string {
   const names = live.length <= NAMED ? live.map((s) => s.name) : null;
   if (live.every((s) => s.failed)) return shutdownTestWords.didNotShutDown(names, live.length, of);
+  if (released) return shutdownTestWords.didNotComeDown(names, live.length, of);
   const limits = new Set(live.map((s) => s.limitV));
   return live.every((s) => s.above)
     ? shutdownTestWords.stillAbove(names, live.length, of, limits.size === 1 ? live[0]!.limitV : null)
