@@ -301,9 +301,10 @@ export const shutdownTestWords = {
     `Treat every string as live.${unknown === 0 ? '' : ` Of ${counted(unknown, 'string')} nothing is known since the ${afterS} s.`} Clear the roof, then release, end the round, and find the cause before anybody works there.`,
   watchingWaitingForPerson: (zone: string, operated: string) =>
     `Watching ${zone}: waiting for a person to operate ${operated}`,
-  readToOfEach: 'Read + to − of each home run first: only a string that was live can be shown dead.',
+  readToOfEach: 'Read + to − of each home run first: only a string that was live can be shown to shut down.',
   wasOperatedReadThe: (transmitter: null | string, initiator: string, name: string) =>
     `${transmitter === null ? initiator : name} was operated: read the home runs`,
+  loggerReportsReadThe: 'The logger reports a shutdown: read the home runs',
   plusMinusAndEarth: (afterS: number) =>
     `+ to −, + to earth and − to earth at the inverter’s end, within ${afterS} s.`,
   releasedWatchComeBack: (zone: string) => `Released: watch ${zone} come back`,

@@ -178,4 +178,13 @@ describe('the finding while a round is watched', () => {
       /^4 of 5 strings did not come down in time\. Every/,
     );
   });
+  it('waits for a person only until the logger reports the command', () => {
+    const strings = many(2, held(410, 20));
+    const waiting = said(pageOf(strings, { operated: null }, { command: null, origin: null }));
+    expect(waiting.heading).toBe('Watching Zone 1: waiting for a person to operate Main initiator');
+    expect(waiting.sentence).toMatch(/only a string that was live can be shown to shut down\.$/);
+    expect(said(pageOf(strings, { operated: null })).heading).toBe(
+      'The logger reports a shutdown: read the home runs',
+    );
+  });
 });

@@ -95,13 +95,15 @@ export function stepWords(
       heading: liveHeading(live, strings.length),
       sentence: shutdownTestWords.treatAsLiveRelease(unknown.length, verdict.limits.afterS),
     };
-  if (!round.operated)
+  if (!round.operated && !page.evidence[step]?.command)
     return {
       heading: shutdownTestWords.watchingWaitingForPerson(zone, operatedName(facts, round.transmitter)),
       sentence: shutdownTestWords.readToOfEach,
     };
   return {
-    heading: shutdownTestWords.wasOperatedReadThe(round.transmitter, facts.initiator.name, name),
+    heading: round.operated
+      ? shutdownTestWords.wasOperatedReadThe(round.transmitter, facts.initiator.name, name)
+      : shutdownTestWords.loggerReportsReadThe,
     sentence: shutdownTestWords.plusMinusAndEarth(verdict.limits.afterS),
   };
 }
