@@ -38,6 +38,7 @@ export const commissioningStepSaid = {
   shutdownTest: {
     notAsked: 'none asked by the rule set',
     passed: (passed: number, zones: number) => `${passed} of ${counted(zones, 'zone')} passed`,
+    underWay: (zones: readonly string[]) => `test of ${named(zones)} under way`,
     unsigned: (zone: string) => `${zone} has no signed shutdown test.`,
     unsignedStrings: (zone: string, strings: readonly string[]) =>
       `${zone}: ${named(strings)} ${isOne(strings.length) ? 'has' : 'have'} no signed shutdown test.`,

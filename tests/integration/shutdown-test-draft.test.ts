@@ -2,6 +2,7 @@ import { randomUUID } from 'node:crypto';
 import { afterAll, beforeAll, beforeEach, describe, expect, it } from 'vitest';
 import type { Act } from '../../src/domain/commissioning/shutdown-test-record';
 import { asActor } from '../../src/server/db/transaction';
+import { siteAndItsSteps } from '../../src/server/services/commissioning';
 import { shutdownTestPage } from '../../src/server/services/shutdown-test-page';
 import { shutdownTestList } from '../../src/server/services/shutdown-test-report';
 import { addActs, endShutdownTest } from '../../src/server/services/shutdown-test-write';
@@ -60,6 +61,20 @@ describe('a draft', () => {
     await scene.db.owner.query(`update unit_type set out_of_box = 'shutdown'`);
     expect((await scene.page(ref)).unheard.unheard).toBe(0);
     await scene.db.owner.query(`update unit_type set out_of_box = 'passing'`);
+  });
+
+  it('shows on the commissioning pages while it is open, and there only', async () => {
+    const step = async () =>
+      (await asActor(scene.technician, (tx) => siteAndItsSteps(tx, scene.fleet.site(CLINIC).ref))).steps.find(
+        (s) => s.key === 'shutdown_test',
+      );
+    expect(await step()).toMatchObject({ state: 'not_started', startedAt: null });
+    const ref = await scene.startTest();
+    const begun = await step();
+    expect(begun).toMatchObject({ state: 'under_way', words: 'test of Whole roof under way' });
+    expect(begun?.startedAt).not.toBeNull();
+    await asActor(scene.technician, (tx) => endShutdownTest(tx, scene.technician, ref, 'Rain came', null));
+    expect(await step()).toMatchObject({ state: 'not_started', words: 'not started', startedAt: null });
   });
 
   it('takes the same act twice once', async () => {

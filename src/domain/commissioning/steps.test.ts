@@ -5,6 +5,7 @@ import {
   openGaps,
   type CommissioningFacts,
   type StringFacts,
+  type ZoneFacts,
 } from './steps';
 
 const string = (change: Partial<StringFacts> = {}): StringFacts => ({
@@ -70,6 +71,22 @@ describe('the steps of a site', () => {
     expect(gapsOf({ zones: [{ name: 'South roof', test: null, untested: [] }] })).toEqual([
       'shutdown_test/untested:South roof',
     ]);
+  });
+
+  it('count a test that is begun and not signed as under way, and it closes no gap', () => {
+    const step = (zones: ZoneFacts[]) =>
+      commissioningSteps(facts({ zones })).find((s) => s.key === 'shutdown_test');
+    const untested = { test: null, untested: ['B3'] };
+    expect(step([{ name: 'South roof', ...untested }])).toMatchObject({
+      state: 'not_started',
+      words: 'not started',
+    });
+    const begun = { name: 'South roof', ...untested, underTest: true };
+    expect(step([begun])).toMatchObject({ state: 'under_way', words: 'test of South roof under way' });
+    expect(step([begun])?.gaps).toHaveLength(1);
+    expect(step([begun, { name: 'Gym', test: 'passed', untested: [] }])?.words).toBe(
+      '1 of 2 zones passed; test of South roof under way',
+    );
   });
 
   it('take a test of some strings for no test of the others', () => {

@@ -39,6 +39,8 @@ export interface ZoneFacts {
   test: 'passed' | 'failed' | 'consistent' | 'not_witnessed' | null;
   /** Strings without a result in force. */
   untested: readonly string[];
+  /** A test is begun and neither signed nor ended. */
+  underTest?: boolean;
 }
 
 export interface CommissioningFacts {
@@ -187,9 +189,14 @@ function shutdownTest({ zones, ruleSet }: CommissioningFacts): Draft {
     return open;
   });
   const begun = zones.some((z) => z.test !== null);
+  const underTest = zones.filter((z) => z.underTest).map((z) => z.name);
   return {
-    state: !begun ? 'not_started' : gaps.length === 0 ? 'done' : 'under_way',
-    words: begun ? said.passed(passed.length, zones.length) : commissioningStepSaid.notStarted,
+    state: !begun && underTest.length === 0 ? 'not_started' : gaps.length === 0 ? 'done' : 'under_way',
+    words: [
+      ...(begun ? [said.passed(passed.length, zones.length)] : []),
+      ...(underTest.length > 0 ? [said.underWay(underTest)] : []),
+      ...(!begun && underTest.length === 0 ? [commissioningStepSaid.notStarted] : []),
+    ].join('; '),
     gaps,
   };
 }

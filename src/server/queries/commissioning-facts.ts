@@ -88,10 +88,11 @@ export async function commissioningFacts(
     strings.get(siteId)?.push({ ...facts, failedChecks: failedChecks ?? [] });
   const facts = new Map<number, CommissioningFacts>();
   for (const { siteId, accepted, ...site } of await siteFacts(tx, siteIds)) {
-    const zones = (await shutdownTestStanding(tx, siteId)).map(({ zone, result, untested }) => ({
+    const zones = (await shutdownTestStanding(tx, siteId)).map(({ zone, result, untested, draft }) => ({
       name: zone.name,
       test: result,
       untested,
+      underTest: draft !== null,
     }));
     facts.set(siteId, { ...site, accepted: accepted ?? [], zones, strings: strings.get(siteId) ?? [] });
   }
@@ -137,7 +138,9 @@ export async function stepStarts(
             (select min(at) from install_check c where c.site_id = s.id) as install_checks,
             (select min(at) from meter_reading m where m.site_id = s.id) as meter_readings,
             (select min(started_at) from roll_call r where r.site_id = s.id) as roll_call,
-            (select min(at) from shutdown_test t where t.site_id = s.id) as shutdown_test,
+            least((select min(at) from shutdown_test t where t.site_id = s.id),
+                  (select min(started_at) from shutdown_test_draft d where d.site_id = s.id and d.closed_at is null)
+            ) as shutdown_test,
             (select min(made_at) from handover_pack h where h.site_id = s.id) as handover
      from site s where s.id = any(:siteIds)`,
     { siteIds },
