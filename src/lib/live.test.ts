@@ -35,7 +35,9 @@ class FakeSocket implements Socket {
   }
 }
 
+const word = { type: 'delta', topic: 'fleet', cursor: '1', change: {} };
 const sockets: FakeSocket[] = [];
+const returned = vi.fn();
 const client = () =>
   new LiveClient({
     open: () => {
@@ -54,8 +56,13 @@ const socket = (): FakeSocket => {
 beforeEach(() => {
   sockets.length = 0;
   vi.useFakeTimers();
+  returned.mockClear();
+  vi.stubGlobal('dispatchEvent', (event: Event) => returned(event.type));
 });
-afterEach(() => vi.useRealTimers());
+afterEach(() => {
+  vi.useRealTimers();
+  vi.unstubAllGlobals();
+});
 
 describe('the live client', () => {
   it('knows the close codes of the schema', () => {
@@ -93,11 +100,13 @@ describe('the live client', () => {
     live.subscribe('fleet', { onChange: () => undefined, onStatus: (s) => seen.push(s) });
     vi.setSystemTime(1000);
     socket().opens();
+    socket().says(word);
     vi.setSystemTime(5000);
     socket().ends(1001);
     vi.setSystemTime(9000);
     vi.advanceTimersByTime(BACK_OFF_MS.first);
     socket().opens();
+    socket().says(word);
     expect(seen.map((s) => [s.live, s.since?.getTime() ?? null])).toEqual([
       [false, null],
       [true, 1000],
@@ -119,6 +128,25 @@ describe('the live client', () => {
     expect(change).not.toHaveBeenCalled();
     vi.advanceTimersByTime(60_000);
     expect(sockets.length).toBeGreaterThan(1);
+  });
+
+  it('is not live while nothing comes, keeps the connection for a while, and tells when it is live again', () => {
+    const live = client();
+    const seen: boolean[] = [];
+    live.subscribe('fleet', { onChange: () => undefined, onStatus: (s) => seen.push(s.live) });
+    socket().opens();
+    // open, but the server has read nothing yet
+    expect(seen).toEqual([false]);
+    socket().says(word);
+    vi.advanceTimersByTime(11_000);
+    expect(seen).toEqual([false, true]);
+    vi.advanceTimersByTime(2000);
+    expect(seen).toEqual([false, true, false]);
+    expect(returned).not.toHaveBeenCalled();
+    socket().says(word);
+    expect(seen).toEqual([false, true, false, true]);
+    expect(returned.mock.calls).toEqual([['online']]);
+    expect(sockets).toHaveLength(1);
   });
 
   it('stops trying when the session has ended', () => {

@@ -34,13 +34,13 @@ export interface Socket {
 
 export interface LiveOptions {
   open: () => Socket;
-  now?: () => number;
   random?: () => number;
-  /** Nothing heard for so long (the server speaks at least every 20 s): the connection is dead. */
-  silenceMaxMs?: number;
 }
 
 const OPEN = 1;
+/** Nothing heard for so long (the server speaks every 5 s while it can read): not live; and then: the connection is dead. */
+const NOT_LIVE_MS = 12_000;
+const DEAD_MS = 38_000;
 // the numbers of schemas/live.ts, repeated so that zod stays out of the browser's bundle; a test compares them
 export const COME_BACK = 4001;
 export const SIGNED_OUT = 4003;
@@ -62,13 +62,8 @@ export class LiveClient {
   private attempt = 0;
   private reconnect: ReturnType<typeof setTimeout> | undefined;
   private silence: ReturnType<typeof setTimeout> | undefined;
-  private readonly now: () => number;
-  private readonly random: () => number;
 
-  constructor(private readonly options: LiveOptions) {
-    this.now = options.now ?? Date.now;
-    this.random = options.random ?? Math.random;
-  }
+  constructor(private readonly options: LiveOptions) {}
 
   /** Listens to a topic until the returned function is called. */
   subscribe(topic: string, subscriber: Subscriber): () => void {
@@ -101,26 +96,27 @@ export class LiveClient {
     this.socket = socket;
     this.listenForSilence();
     socket.onopen = () => {
-      this.attempt = 0;
-      this.setStatus(true);
       for (const [topic, { cursor }] of this.topics)
         this.send(cursor ? { type: 'subscribe', topic, cursor } : { type: 'subscribe', topic });
     };
     socket.onmessage = ({ data }) => {
       this.listenForSilence();
+      // an open socket alone says nothing: the server may be unable to read
+      this.attempt = 0;
+      this.setStatus(true);
       if (typeof data === 'string') this.receive(JSON.parse(data) as LiveMessage);
     };
     socket.onclose = ({ code }) => this.closed(socket, code);
   }
 
-  private closed(socket: Socket, code: number): void {
+  private closed(socket: Socket | null, code: number): void {
     if (this.socket !== socket) return;
     this.socket = null;
     clearTimeout(this.silence);
     this.setStatus(false, code === SIGNED_OUT);
     if (code === SIGNED_OUT || this.topics.size === 0) return;
     // asked to come back: the server is well, so the first try is soon
-    const wait = backOffMs(code === COME_BACK ? 0 : this.attempt++, this.random());
+    const wait = backOffMs(code === COME_BACK ? 0 : this.attempt++, (this.options.random ?? Math.random)());
     this.reconnect = setTimeout(() => this.connect(), wait);
   }
 
@@ -144,19 +140,24 @@ export class LiveClient {
   private listenForSilence(): void {
     clearTimeout(this.silence);
     this.silence = setTimeout(() => {
-      const socket = this.socket;
-      if (!socket) return;
-      socket.close();
-      // a dead network may never deliver the close
-      this.closed(socket, 1006);
-    }, this.options.silenceMaxMs ?? 50_000);
+      this.setStatus(false);
+      // much may still be on its way through a slow network
+      this.silence = setTimeout(() => {
+        this.socket?.close();
+        // a dead network may never deliver the close
+        this.closed(this.socket, 1006);
+      }, DEAD_MS);
+    }, NOT_LIVE_MS);
   }
 
   private setStatus(live: boolean, signedOut = false): void {
     if (this.status.since && this.status.live === live && this.status.signedOut === signedOut) return;
-    this.status = { live, since: new Date(this.now()), signedOut };
+    const again = live && this.status.since;
+    this.status = { live, since: new Date(), signedOut };
     for (const { subscribers } of this.topics.values())
       for (const s of subscribers) s.onStatus?.(this.status);
+    // for whoever waits for the network, the server is as good as that
+    if (again) dispatchEvent(new Event('online'));
   }
 
   private stop(): void {

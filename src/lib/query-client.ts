@@ -20,6 +20,10 @@ export function makeQueryClient(): QueryClient {
   });
 }
 
+/** Reads again what could not be read: what stood in the way is over. */
+export const readFailedAgain = (client: QueryClient): void =>
+  void client.refetchQueries({ predicate: ({ state }) => state.status === 'error' });
+
 /** What changes in one go is told in one go: so ten changes of a page's data draw it once, not ten times. */
 let untold: (() => void)[] = [];
 notifyManager.setScheduler((tell) => {
@@ -37,5 +41,9 @@ let ofThisPage: QueryClient | undefined;
 /** The one query client that all islands of a page share; on the server a new one each time. */
 export function queryClient(): QueryClient {
   if (typeof window === 'undefined') return makeQueryClient();
-  return (ofThisPage ??= makeQueryClient());
+  if (ofThisPage) return ofThisPage;
+  const client = makeQueryClient();
+  // of the network, and of /live (lib/live.ts)
+  window.addEventListener('online', () => readFailedAgain(client));
+  return (ofThisPage = client);
 }

@@ -25,6 +25,11 @@ export class Repeated {
     else this.schedule(Math.max(this.gatherMs, this.beganAt + this.everyMs - Date.now()));
   }
 
+  /** For how long it has been running by now; 0: it rests. */
+  get runningMs(): number {
+    return this.running ? Date.now() - this.beganAt : 0;
+  }
+
   async stop(): Promise<void> {
     this.stopped = true;
     clearTimeout(this.timer);

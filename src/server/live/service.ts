@@ -5,7 +5,7 @@ import { actorOfCookie } from '../auth/sessions';
 import { isDatabaseAway } from '../errors';
 import { asIngest } from '../db/transaction';
 import { log } from '../log';
-import { siteByString } from '../queries/live';
+import { readable, siteByString } from '../queries/live';
 import { CHANNELS, readChanged, readNoticed } from '../queries/live-notices';
 import { keptSites } from '../services/kept-sites';
 import { Connection, type Subscription } from './connection';
@@ -20,8 +20,12 @@ const GATHER_MS = 10;
 const OVERVIEW_EVERY_MS = 500;
 /** Events behind a running transaction are asked for again after this. */
 const HELD_AGAIN_MS = 250;
-/** Every listener hears something this often, if only that the connection stands; it also makes lost wake-ups good. */
+/** Everything is read anew this often, which makes lost wake-ups good. */
 const HEARTBEAT_MS = 15_000;
+/** Browsers hear something this often, if only that the database was read: what is silent for two of it is not live. */
+const PULSE_MS = 5000;
+/** While a round takes longer, nothing is said to be well. */
+const ROUND_MAX_MS = 5000;
 const SESSIONS_EVERY_MS = 60_000;
 /** What changed at sites that somebody looks at is read so often, before they look again. */
 const READ_AHEAD_EVERY_MS = 2000;
@@ -42,6 +46,8 @@ export class LiveHub {
   private readonly siteByString = new Map<number, number>();
   private readonly news = new Repeated(GATHER_MS, GATHER_MS, () => this.sendNews());
   private readonly overviews = new Repeated(GATHER_MS, OVERVIEW_EVERY_MS, () => this.sendOverviews());
+  private readonly pulse = new Repeated(0, PULSE_MS, () => this.sendPulse());
+  private pulseTimer: NodeJS.Timeout | undefined;
   private beat: NodeJS.Timeout | undefined;
   private sessionTimer: NodeJS.Timeout | undefined;
   private aheadTimer: NodeJS.Timeout | undefined;
@@ -70,6 +76,7 @@ export class LiveHub {
       this.notices.soon();
       this.wake();
     }, HEARTBEAT_MS);
+    this.pulseTimer = setInterval(() => this.pulse.soon(), PULSE_MS);
     this.sessionTimer = setInterval(() => void this.checkSessions(), SESSIONS_EVERY_MS);
     this.aheadTimer = setInterval(() => this.ahead.soon(), READ_AHEAD_EVERY_MS);
   }
@@ -77,13 +84,20 @@ export class LiveHub {
   async stop(): Promise<void> {
     this.stopping = true;
     clearInterval(this.beat);
+    clearInterval(this.pulseTimer);
     clearInterval(this.sessionTimer);
     clearInterval(this.aheadTimer);
     clearTimeout(this.heldTimer);
     for (const { ws } of this.connections) ws.close(1001, 'the server is going away');
     await this.listener.stop();
     keptSites().heardBy(() => false);
-    await Promise.all([this.news.stop(), this.overviews.stop(), this.notices.stop(), this.ahead.stop()]);
+    await Promise.all([
+      this.news.stop(),
+      this.overviews.stop(),
+      this.notices.stop(),
+      this.ahead.stop(),
+      this.pulse.stop(),
+    ]);
     for (const { ws } of this.connections) ws.terminate();
   }
 
@@ -245,6 +259,17 @@ export class LiveHub {
       if (BigInt(cursor) > BigInt(to.cursor)) to.cursor = cursor;
       if (everything || Object.keys(change).length > 0)
         to.connection.send({ type: 'delta', topic: to.topic, cursor: to.cursor, change });
+    }
+  }
+
+  /** Says that the database answers, by a delta without content; nothing where it does not, or a round hangs. */
+  private async sendPulse(): Promise<void> {
+    if (this.connections.size === 0) return;
+    await asIngest(readable);
+    if ([this.news, this.overviews, this.notices].some((round) => round.runningMs > ROUND_MAX_MS)) return;
+    for (const connection of this.connections) {
+      const [one] = connection.topics.values();
+      if (one) connection.send({ type: 'delta', topic: one.topic, cursor: one.cursor, change: {} });
     }
   }
 

@@ -96,3 +96,8 @@ export async function rollCallOpen(tx: Tx, siteId: number): Promise<boolean> {
   );
   return rows.length > 0;
 }
+
+/** Whether the database answers: it throws, or hangs, where it doesn't. */
+export async function readable(tx: Tx): Promise<void> {
+  await tx.raw('select 1');
+}
