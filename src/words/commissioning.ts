@@ -1,4 +1,4 @@
-import { countAtStart, counted, decibelMilliwatts, listed, number } from '../drawings/numbers';
+import { countAtStart, counted, decibelMilliwatts, number } from '../drawings/numbers';
 import { clock, clockOrDate } from '../drawings/times';
 
 export const curveSheet = {
@@ -220,12 +220,6 @@ export const commissioningWords = {
     `None of the ${units} units with serials ${replace} has stirred: compare their labels.`,
   theLoggersAreListening: 'The loggers are listening.',
   tooFewAnswersSo: 'Too few answers so far to say how long it takes.',
-  nothingListens: (since: string | null, timeZone: string) =>
-    since ? `Nothing has listened since ${clock(since, timeZone)}.` : 'Nothing listens.',
-  nobodyCanTell:
-    'No gateway reports, so nobody can tell who would answer. See first that the logger has power and network. Treat every string as live.',
-  someAreDeaf: (gateways: readonly string[]) =>
-    `Nothing comes from ${listed(gateways)}: of units that nothing else hears, nobody can tell.`,
   noFurtherAnswersAre: 'No further answers are expected soon.',
   notAnsweredWalkTo: (missing: number, missing2: string) =>
     `${counted(missing, 'unit')} ${missing2} not answered: walk to ${missing === 1 ? 'it' : 'them'}, and compare the label.`,

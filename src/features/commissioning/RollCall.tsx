@@ -35,10 +35,6 @@ const Strings = later(
   async () => (await import('./StringsSheet')).StringsSheet,
   import.meta.env.SSR ? StringsSheet : null,
 );
-const Curve = later(
-  async () => (await import('./CurveSheet')).CurveSheet,
-  import.meta.env.SSR ? CurveSheet : null,
-);
 const lists = () => import('./Lists');
 const Missing = later(async () => (await lists()).MissingSheet, import.meta.env.SSR ? MissingSheet : null);
 const Unknown = later(async () => (await lists()).UnknownSheet, import.meta.env.SSR ? UnknownSheet : null);
@@ -146,7 +142,7 @@ export function RollCall({ initial, mayRun, mayPlace, view, typed }: Props) {
           <RunPanel page={page} mayRun={mayRun} roster={tally.roster} onChanged={again} typed={typed} />
         </div>
         <div className="grid min-w-0 content-start gap-5 lg:col-start-1 lg:row-span-2 lg:row-start-2 xl:col-start-2 xl:row-start-1">
-          <Curve className="min-w-0 empty:hidden" page={page} tally={tally} now={now} outlook={outlook} />
+          <CurveSheet page={page} tally={tally} now={now} outlook={outlook} />
           <Strings className="min-w-0 empty:hidden" siteId={siteId} tally={tally} view={view} />
           <Missing
             className="min-w-0 empty:hidden"

@@ -63,10 +63,6 @@ describe('the outlook of a roll call', () => {
       expect(p.high).toBeLessThanOrEqual(60);
     }
   });
-  it('expects nobody while nothing listens', () => {
-    const deaf = { name: 'gateway 1', heard: 52, weakest: null, lastHeardAt: null, silent: true };
-    expect(outlookOf({ ...tallyOfUnits(stirring), gateways: [deaf] }, run, at(600))).toBeNull();
-  });
   it('names the string of which nobody stirred', () => {
     const dead = Array.from({ length: 14 }, (_, i) => unit('B4', i, null));
     const outlook = outlookOf(tallyOfUnits([...stirring, ...dead]), run, at(600));

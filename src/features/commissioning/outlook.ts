@@ -1,6 +1,6 @@
 import { forecastRollCall, type ForecastPoint } from '../../domain/commissioning/roll-call';
 import type { RollCallRun } from '../../schemas/api/roll-call';
-import { nothingListens, type RollTally } from './tally';
+import type { RollTally } from './tally';
 import type { Outlook } from './words';
 
 export interface RollCallOutlook extends Outlook {
@@ -11,11 +11,10 @@ export interface RollCallOutlook extends Outlook {
 const seconds = (iso: string): number => new Date(iso).getTime() / 1000;
 
 /**
- * What may be expected of a running roll call; null while too few have answered to say anything, or nothing listens. Units that had
+ * What may be expected of a running roll call; null while too few have answered to say anything. Units that had
  * answered before this start are left out of the pace: nobody timed them.
  */
 export function outlookOf(tally: RollTally, run: RollCallRun, now: Date): RollCallOutlook | null {
-  if (nothingListens(tally)) return null;
   const startedAtS = Math.floor(seconds(run.startedAt));
   const timed = tally.units.filter((u) => !u.answer || seconds(u.answer.at) >= startedAtS);
   const before = tally.units.length - timed.length;

@@ -142,10 +142,6 @@ export function tallyOf(page: RollCallPage): RollTally {
   };
 }
 
-/** Every gateway is silent: who doesn't answer then may have tried. */
-export const nothingListens = ({ gateways }: Pick<RollTally, 'gateways'>): boolean =>
-  gateways.length > 0 && gateways.every((g) => g.silent);
-
 /**
  * Cumulative answers of the roll over time, one point an answer, from `fromS` (epoch seconds) on. Loggers tell whole
  * seconds, so an answer in the second of the start belongs to it.

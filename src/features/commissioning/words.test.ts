@@ -196,24 +196,6 @@ describe('the sentence of a roll call', () => {
       'No further answers are expected soon. 3 units have not answered: walk to them, and compare the label.',
     );
   });
-  it('running, and nothing listens: nobody is sent anywhere, whatever the forecast was', () => {
-    const gateway = (name: string, minute: number, silent: boolean) => ({
-      name,
-      heard: 0,
-      weakest: null,
-      lastHeardAt: `2026-12-01T10:${minute}:00.000Z`,
-      silent,
-    });
-    const deaf = { ...some, gateways: [gateway('gateway 1', 12, true), gateway('gateway 2', 14, true)] };
-    const told =
-      'Nothing has listened since 10:14. No gateway reports, so nobody can tell who would answer. See first that the logger has power and network. Treat every string as live.';
-    expect(said(deaf, run(), { expected: 0, by: null, notStirred: [] })).toBe(told);
-    expect(said(deaf, run())).toBe(told);
-    const half = { ...some, gateways: [gateway('gateway 1', 12, true), gateway('gateway 2', 14, false)] };
-    expect(said(half, run(), { expected: 0, by: null, notStirred: [] })).toBe(
-      'No further answers are expected soon. Nothing comes from gateway 1: of units that nothing else hears, nobody can tell.',
-    );
-  });
   it('running, nothing can be said yet', () => {
     expect(said(some, run())).toBe(
       'The loggers are listening. Too few answers so far to say how long it takes.',

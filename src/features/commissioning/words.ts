@@ -1,7 +1,7 @@
 import { listed } from '../../drawings/numbers';
 import type { RollCallRun } from '../../schemas/api/roll-call';
 import type { CommandNow } from '../../schemas/api/now';
-import { nothingListens, type RollTally, type UnknownUnit } from './tally';
+import type { RollTally, UnknownUnit } from './tally';
 import { commissioningWords } from '../../words/commissioning';
 
 /** The sentences of the roll call. Every one must be true in its state: they are read by people on roofs. */
@@ -62,25 +62,9 @@ function running(
   timeZone: string,
 ): Pick<RollCallWords, 'strong' | 'rest'> {
   const missing = tally.missing.length;
-  const deaf = tally.gateways.filter((g) => g.silent);
-  if (nothingListens(tally)) {
-    const last = deaf.flatMap((g) => g.lastHeardAt ?? []).sort();
-    return {
-      strong: commissioningWords.nothingListens(last.at(-1) ?? null, timeZone),
-      rest: commissioningWords.nobodyCanTell,
-    };
-  }
-  const rest = [
-    notStirred(outlook?.notStirred ?? []),
-    deaf.length > 0 ? commissioningWords.someAreDeaf(deaf.map((g) => g.name)) : '',
-  ]
-    .filter(Boolean)
-    .join(' ');
+  const rest = notStirred(outlook?.notStirred ?? []);
   if (!outlook)
-    return {
-      strong: commissioningWords.theLoggersAreListening,
-      rest: rest || commissioningWords.tooFewAnswersSo,
-    };
+    return { strong: commissioningWords.theLoggersAreListening, rest: commissioningWords.tooFewAnswersSo };
   if (outlook.expected === 0)
     return {
       strong: commissioningWords.noFurtherAnswersAre,
