@@ -219,6 +219,23 @@ export const commissioningWords = {
   noneOfTheUnits: (units: number, replace: string) =>
     `None of the ${units} units with serials ${replace} has stirred: compare their labels.`,
   theLoggersAreListening: 'The loggers are listening.',
+  nothingListens: (since: string | null, loggers: boolean, who: readonly string[], timeZone: string) =>
+    since
+      ? loggers
+        ? `Nothing listens since ${clock(since, timeZone)}: logger ${who.join(', ')} does not report.`
+        : `Nothing has been heard since ${clock(since, timeZone)}, by ${who.join(', ')}.`
+      : 'Nothing has listened here yet.',
+  notHeardSince: (
+    since: string | null,
+    loggers: boolean,
+    who: readonly string[],
+    missing: number,
+    timeZone: string,
+  ) =>
+    `${loggers ? `Of logger ${who.join(', ')}` : `By ${who.join(', ')}`} nothing has been heard ${since ? `since ${clock(since, timeZone)}` : 'yet'}. Of ${number(missing)} missing ${missing === 1 ? 'unit' : 'units'} nobody can tell.`,
+  thisPageIsNot: 'This page is not live now.',
+  nobodyCanTell: 'Nobody can tell who would answer. Treat every string as live.',
+  treatEveryString: 'Treat every string as live.',
   tooFewAnswersSo: 'Too few answers so far to say how long it takes.',
   noFurtherAnswersAre: 'No further answers are expected soon.',
   notAnsweredWalkTo: (missing: number, missing2: string) =>

@@ -19,11 +19,14 @@ const SHOWN_AT_FIRST = 30;
 export function MissingSheet({
   tally,
   started,
+  told,
   siteId,
   onReplace,
 }: {
   tally: RollTally;
   started: boolean;
+  /** Whether it can be told of each unit that it does not answer: else nobody is sent to them. */
+  told: boolean;
   siteId: string;
   /** Another unit takes the place of one that isn't heard; null: the person may not change the as-built. */
   onReplace: ((slot: SlotRef) => void) | null;
@@ -73,7 +76,9 @@ export function MissingSheet({
       aside={
         <span className="flex flex-wrap items-center gap-x-4 gap-y-1">
           {lists.countedMissingUnit(tally.missing.length)}
-          {tally.missing.length > 0 && <ButtonLink href={paths.walk(siteId)}>{lists.walkToThem}</ButtonLink>}
+          {told && tally.missing.length > 0 && (
+            <ButtonLink href={paths.walk(siteId)}>{lists.walkToThem}</ButtonLink>
+          )}
         </span>
       }
     >

@@ -7,7 +7,6 @@ import { Heading } from '../../components/ui/Heading';
 import { LiveMark } from '../../components/ui/Live';
 import { NotRead } from '../../components/ui/NotRead';
 import { Notice } from '../../components/ui/Notice';
-import { useNow } from '../../components/ui/Time';
 import { late } from '../../lib/late';
 import { later } from '../../lib/later';
 import { api } from '../../lib/api';
@@ -26,14 +25,20 @@ import { RunPanel, type StartTyped } from './RunPanel';
 import { WiredSheet } from './WiredSheet';
 import { StringsSheet } from './StringsSheet';
 import { patchRollCall, runChanged } from './live';
-import { outlookOf } from './outlook';
+import { deafOf } from './listening';
+import { outlookOf, STEP_S } from './outlook';
 import { liveSteps, tallyOf } from './tally';
+import { useSteps } from './use-steps';
 import { rollCallWords } from './words';
 import { commissioningRollCall } from '../../words/commissioning';
 
 const Strings = later(
   async () => (await import('./StringsSheet')).StringsSheet,
   import.meta.env.SSR ? StringsSheet : null,
+);
+const Curve = later(
+  async () => (await import('./CurveSheet')).CurveSheet,
+  import.meta.env.SSR ? CurveSheet : null,
 );
 const lists = () => import('./Lists');
 const Missing = later(async () => (await lists()).MissingSheet, import.meta.env.SSR ? MissingSheet : null);
@@ -78,6 +83,8 @@ export function RollCall({ initial, mayRun, mayPlace, view, typed }: Props) {
       queryFn: ({ signal }) =>
         meanwhile.read(() => api<RollCallPage>(paths.api.rollCall(siteId), { signal }), patchRollCall),
       initialData: initial,
+      // whether loggers speak is brought by no change
+      refetchInterval: ({ state }) => state.data?.run?.stoppedAt === null && 30_000,
     },
     client,
   );
@@ -98,12 +105,20 @@ export function RollCall({ initial, mayRun, mayPlace, view, typed }: Props) {
   const roll = useLive(`roll-call:${siteId}`, heed('roll'));
   const site = useLive(`site:${siteId}`, heed('site'));
   const lost = [roll, site].find((s) => !s.live && s.since);
-  const now = useNow(initial.at, 5000);
+  const now = useSteps(initial.at, STEP_S * 1000);
 
   const tally = useMemo(() => tallyOf(page), [page]);
+  const running = page.run?.stoppedAt === null;
+  const deaf = useMemo(
+    () => (!running ? null : lost ? 'page' : deafOf(page, tally, now)),
+    [running, lost, page, tally, now],
+  );
   const outlook = useMemo(
-    () => (page.run && !page.run.stoppedAt ? outlookOf(tally, page.run, now) : null),
-    [tally, page.run, now],
+    () =>
+      page.run && running && deaf !== 'page' && !deaf?.all
+        ? outlookOf(tally, page.run, now, deaf?.strings ?? undefined)
+        : null,
+    [tally, page.run, running, now, deaf],
   );
   const [dialog, setDialog] = useState<Open | null>(null);
   const [done, setDone] = useState('');
@@ -112,7 +127,7 @@ export function RollCall({ initial, mayRun, mayPlace, view, typed }: Props) {
     setDone(DONE[body.kind]);
     again();
   };
-  const words = rollCallWords(tally, page.run, outlook, page.site.timeZone);
+  const words = rollCallWords(tally, page.run, outlook, page.site.timeZone, deaf);
   const waits = page.passesUntilHeard.length > 0 && tally.missing.length > 0;
   return (
     <>
@@ -142,12 +157,13 @@ export function RollCall({ initial, mayRun, mayPlace, view, typed }: Props) {
           <RunPanel page={page} mayRun={mayRun} roster={tally.roster} onChanged={again} typed={typed} />
         </div>
         <div className="grid min-w-0 content-start gap-5 lg:col-start-1 lg:row-span-2 lg:row-start-2 xl:col-start-2 xl:row-start-1">
-          <CurveSheet page={page} tally={tally} now={now} outlook={outlook} />
+          <Curve className="min-w-0 empty:hidden" page={page} tally={tally} now={now} outlook={outlook} />
           <Strings className="min-w-0 empty:hidden" siteId={siteId} tally={tally} view={view} />
           <Missing
             className="min-w-0 empty:hidden"
             tally={tally}
             started={page.run !== null}
+            told={deaf === null}
             siteId={siteId}
             onReplace={mayPlace ? (slot) => setDialog({ kind: 'replace', slot }) : null}
           />

@@ -8,20 +8,29 @@ export interface RollCallOutlook extends Outlook {
   curve: ForecastPoint[];
 }
 
+/** The forecast is made anew this often. */
+export const STEP_S = 10;
 const seconds = (iso: string): number => new Date(iso).getTime() / 1000;
 
 /**
  * What may be expected of a running roll call; null while too few have answered to say anything. Units that had
- * answered before this start are left out of the pace: nobody timed them.
+ * answered before this start are left out of the pace: nobody timed them. So are the strings `left`, of which nobody can
+ * tell. Told in steps, so that every screen says the same at the same time.
  */
-export function outlookOf(tally: RollTally, run: RollCallRun, now: Date): RollCallOutlook | null {
+export function outlookOf(
+  tally: RollTally,
+  run: RollCallRun,
+  now: Date,
+  left: ReadonlySet<string> = new Set(),
+): RollCallOutlook | null {
   const startedAtS = Math.floor(seconds(run.startedAt));
-  const timed = tally.units.filter((u) => !u.answer || seconds(u.answer.at) >= startedAtS);
-  const before = tally.units.length - timed.length;
+  const told = tally.units.filter((u) => u.answer ?? !left.has(u.stringId));
+  const timed = told.filter((u) => !u.answer || seconds(u.answer.at) >= startedAtS);
+  const before = told.length - timed.length;
   const numbers = new Map(tally.gateways.map((g, i) => [g.name, i]));
   const forecast = forecastRollCall({
     startedAtS,
-    nowS: now.getTime() / 1000,
+    nowS: Math.max(startedAtS, Math.floor(now.getTime() / 1000 / STEP_S) * STEP_S),
     units: timed.map((u) => ({
       group: u.stringName,
       // which gateway would hear a unit is learned, not drawn: of the others nothing is known

@@ -2,6 +2,8 @@ import { describe, expect, it } from 'vitest';
 import type { HeardItem } from '../../schemas/live';
 import type { CommandNow, SlotNow, StringNow } from '../../schemas/api/now';
 import type { RollCallPage, RollCallRun } from '../../schemas/api/roll-call';
+import { deafOf } from './listening';
+import { outlookOf } from './outlook';
 import { curveOf, tallyOf } from './tally';
 import { commandInForceWords, nearWords, rollCallHeading, rollCallWords } from './words';
 
@@ -69,6 +71,7 @@ const pageOf = (strings: StringNow[], answers: HeardItem[]): RollCallPage => ({
   strings,
   answers,
   gateways: [],
+  reportIntervalS: 60,
   loggers: [],
   commands: [],
   steps: [],
@@ -217,6 +220,91 @@ describe('the sentence of a roll call', () => {
       'According to the type entered, its 2 units report nothing: only a meter or the inverter’s input shows what they do.',
     );
     expect(said(tallyOf(pageOf([], [])), null)).toBe('The as-built holds no units yet.');
+  });
+});
+
+describe('a roll call where something does not listen', () => {
+  const heardAt = '2026-12-01T10:20:00.000Z';
+  const at = (minute: number) => new Date(`2026-12-01T10:${minute}:00.000Z`);
+  const gateway = (name: string, lastHeardAt: string | null) => ({
+    name,
+    number: 1,
+    lastHeardAt,
+    units: 1,
+    silent: false,
+  });
+  const page = (gateways: RollCallPage['gateways'], lastSpokeAt: string | null): RollCallPage => ({
+    ...pageOf(strings, [answer('AA-01', 1), answer('AA-03', 4, 'gateway 2')]),
+    gateways,
+    loggers: [{ serial: 'LG-7', connected: true, lastSpokeAt }],
+  });
+  const both = (one: string | null, two: string | null, spoke: string | null) =>
+    page([gateway('gateway 1', one), gateway('gateway 2', two)], spoke);
+  const nothingMore = { expected: 0, by: null, notStirred: [] };
+  const said = (p: RollCallPage, now: Date) => {
+    const tally = tallyOf(p);
+    const words = rollCallWords(tally, run(), nothingMore, 'UTC', deafOf(p, tally, now));
+    return `${words.strong} ${words.rest}`.replace(/\u00a0/g, ' ').trim();
+  };
+  it('is told as ever while reports come', () => {
+    expect(
+      deafOf(both(heardAt, heardAt, heardAt), tallyOf(both(heardAt, heardAt, heardAt)), at(22)),
+    ).toBeNull();
+    expect(said(both(heardAt, heardAt, heardAt), at(22))).toContain('No further answers are expected soon.');
+  });
+  it('says that nothing listens, forecasts nothing and sends nobody when the logger is silent', () => {
+    expect(said(both(heardAt, heardAt, heardAt), at(23))).toBe(
+      'Nothing listens since 10:20: logger LG-7 does not report. Nobody can tell who would answer. Treat every string as live.',
+    );
+  });
+  it('says so of gateways too, and of a site where nothing was ever heard', () => {
+    expect(said(both(heardAt, heardAt, at(30).toISOString()), at(30))).toBe(
+      'Nothing has been heard since 10:20, by gateway 1, gateway 2. Nobody can tell who would answer. Treat every string as live.',
+    );
+    const never = { ...page([], null), answers: [] };
+    expect(said(never, at(30))).toContain('Nothing has listened here yet. Nobody can tell');
+  });
+  it('names the gateway that is silent and counts of whom nobody can tell', () => {
+    const now = at(30);
+    const some = both(now.toISOString(), heardAt, now.toISOString());
+    expect(said(some, now)).toBe(
+      'By gateway 2 nothing has been heard since 10:20. Of 1 missing unit nobody can tell. No further answers are expected soon. 1 unit has not answered: walk to it, and compare the label. Treat every string as live.',
+    );
+  });
+  it('says nothing of the roof from a page that is not live', () => {
+    const words = rollCallWords(tallyOf(both(heardAt, heardAt, heardAt)), run(), nothingMore, 'UTC', 'page');
+    expect(`${words.strong} ${words.rest}`).toBe(
+      'This page is not live now. Nobody can tell who would answer. Treat every string as live.',
+    );
+  });
+  it('leaves strings of which nobody can tell out of the forecast', () => {
+    const many = Array.from({ length: 12 }, (_, i) => slot(i + 1, `BB-${i}0-${i}`));
+    const p = pageOf(
+      [stringOf('B1', many), stringOf('B2', [slot(1, 'CC-1'), slot(2, 'CC-2')])],
+      many.slice(0, 10).map((s, i) => answer(s.serial ?? '', i)),
+    );
+    const left = outlookOf(tallyOf(p), run(), at(12), new Set([p.strings[1]?.id ?? '']));
+    const all = outlookOf(tallyOf(p), run(), at(12));
+    expect(left?.expected).toBeLessThanOrEqual(2);
+    expect(left?.curve.at(-1)?.high).toBeLessThan(13);
+    expect(all?.curve.at(-1)?.high).toBeGreaterThan(12);
+  });
+  it('forecasts the same on every screen at the same time', () => {
+    const tally = tallyOf(
+      pageOf(
+        strings.slice(0, 1).concat(
+          stringOf(
+            'D1',
+            Array.from({ length: 9 }, (_, i) => slot(i + 1, `DD-${i}0-${i}`)),
+          ),
+        ),
+        Array.from({ length: 7 }, (_, i) => answer(`DD-${i}0-${i}`, i)),
+      ),
+    );
+    const a = outlookOf(tally, run(), new Date('2026-12-01T10:08:20.100Z'));
+    const b = outlookOf(tally, run(), new Date('2026-12-01T10:08:28.900Z'));
+    expect(a).not.toBeNull();
+    expect(a).toEqual(b);
   });
 });
 

@@ -1,6 +1,7 @@
 import { listed } from '../../drawings/numbers';
 import type { RollCallRun } from '../../schemas/api/roll-call';
 import type { CommandNow } from '../../schemas/api/now';
+import type { Deaf } from './listening';
 import type { RollTally, UnknownUnit } from './tally';
 import { commissioningWords } from '../../words/commissioning';
 
@@ -56,12 +57,11 @@ function notStirred(groups: Outlook['notStirred']): string {
   return said.join(' ');
 }
 
-function running(
-  tally: RollTally,
+function expected(
   outlook: Outlook | null,
   timeZone: string,
+  missing: number,
 ): Pick<RollCallWords, 'strong' | 'rest'> {
-  const missing = tally.missing.length;
   const rest = notStirred(outlook?.notStirred ?? []);
   if (!outlook)
     return { strong: commissioningWords.theLoggersAreListening, rest: commissioningWords.tooFewAnswersSo };
@@ -80,12 +80,33 @@ function running(
   return { strong: `${who}${when}.`, rest };
 }
 
+/** Nothing is expected, and nobody sent to a unit, of which nobody can tell. */
+function running(
+  tally: RollTally,
+  outlook: Outlook | null,
+  timeZone: string,
+  deaf: Deaf | 'page' | null,
+): Pick<RollCallWords, 'strong' | 'rest'> {
+  const words = commissioningWords;
+  const missing = tally.missing.length;
+  if (deaf === 'page') return { strong: words.thisPageIsNot, rest: words.nobodyCanTell };
+  if (!deaf?.missing) return expected(outlook, timeZone, missing);
+  const { all, since, loggers, who } = deaf;
+  if (all) return { strong: words.nothingListens(since, loggers, who, timeZone), rest: words.nobodyCanTell };
+  const said = outlook && deaf.missing < missing && expected(outlook, timeZone, missing - deaf.missing);
+  return {
+    strong: words.notHeardSince(since, loggers, who, deaf.missing, timeZone),
+    rest: `${said ? `${said.strong} ${said.rest} ` : ''}${words.treatEveryString}`,
+  };
+}
+
 /** Heading and sentence for every state of a roll call. */
 export function rollCallWords(
   tally: RollTally,
   run: RollCallRun | null,
   outlook: Outlook | null,
   timeZone: string,
+  deaf: Deaf | 'page' | null = null,
 ): RollCallWords {
   const heading = rollCallHeading(tally.roster, tally.heard);
   const missing = tally.missing.length;
@@ -118,7 +139,7 @@ export function rollCallWords(
       strong: commissioningWords.itWasStoppedAt(run.stoppedAt, timeZone, run.stoppedBy),
       rest: commissioningWords.notAnsweredStartIt(missing, have(missing)),
     };
-  return { heading, ...running(tally, outlook, timeZone) };
+  return { heading, ...running(tally, outlook, timeZone, deaf) };
 }
 
 const FOLLOWS: Record<CommandNow['inForce'], string> = {

@@ -32,6 +32,7 @@ export const rollCallPage = z.object({
   strings: z.array(stringNow),
   answers: z.array(heardItem), // oldest first; each serial's first answer at this site
   gateways: z.array(gatewayNow),
+  reportIntervalS: z.number(), // how often loggers here report
   loggers: z.array(z.object({ serial: z.string(), connected: z.boolean(), lastSpokeAt: time.nullable() })),
   commands: z.array(commandNow), // in force other than released: what a unit follows once it is heard
   /** Every step of the site, from as-built to handover. */

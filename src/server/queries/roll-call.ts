@@ -130,6 +130,15 @@ export async function loggersOf(
   return rows.map((r) => ({ ...r, lastSpokeAt: r.lastSpokeAt?.toISOString() ?? null }));
 }
 
+/** How often the loggers of a site report, seconds. */
+export async function reportIntervalOf(tx: Tx, siteId: number): Promise<number> {
+  const { rows } = await tx.raw<{ rows: { s: number }[] }>(
+    'select report_interval_s as s from site where id = ?',
+    [siteId],
+  );
+  return rows[0]?.s ?? 60;
+}
+
 /** Names of the unit types at the site that pass full module voltage until they have answered. */
 export async function typesPassingUntilHeard(tx: Tx, siteId: number): Promise<string[]> {
   const { rows } = await tx.raw<{ rows: { name: string }[] }>(

@@ -1,7 +1,13 @@
 import type { RollCallPage } from '../../schemas/api/roll-call';
 import type { Tx } from '../db/transaction';
 import { found } from '../errors';
-import { answersOf, latestRollCall, loggersOf, typesPassingUntilHeard } from '../queries/roll-call';
+import {
+  answersOf,
+  latestRollCall,
+  loggersOf,
+  reportIntervalOf,
+  typesPassingUntilHeard,
+} from '../queries/roll-call';
 import { visibleSite } from '../queries/visible-site';
 import { siteAndItsSteps } from './commissioning';
 import { gatewaysNow, stringsNow } from '../queries/now';
@@ -21,6 +27,7 @@ export async function rollCallPage(tx: Tx, siteRef: string, at: Date): Promise<R
     strings: await stringsNow(tx, at, { siteId: site.id }),
     answers: await answersOf(tx, site.id),
     gateways: await gatewaysNow(tx, at, site.id),
+    reportIntervalS: await reportIntervalOf(tx, site.id),
     loggers: await loggersOf(tx, site.id, at),
     commands: now?.commands ?? [],
     steps: (await siteAndItsSteps(tx, siteRef)).steps,
