@@ -37,6 +37,7 @@ export const conductorsSaid = {
     'another source feeds this input',
     'the wiring differs from the as-built',
   ],
+  flowingCouldBe: ['another source feeds this input', 'the wiring differs from the as-built'],
   twoThirds: 'two thirds of a module or 3.5 standard deviations of the two measurements',
   twoThirdsOfClaims:
     'two thirds of a module or 3.5 standard deviations of the two measurements; the sum is what the units claim',

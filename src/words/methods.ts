@@ -1,4 +1,4 @@
-import { percent } from '../drawings/numbers';
+import { number, percent } from '../drawings/numbers';
 
 export const methodSheet = {
   source: 'Source',
@@ -54,8 +54,8 @@ export const notesConduct = {
   outsideTheArrayBoundary: (outsideArrayLimitV: number) =>
     `${outsideArrayLimitV} V outside the array boundary: NEC 690.12(B)(1).`,
   twiceTheUnitsHighest: 'Twice the units’ highest shutdown voltage: our own rule.',
-  anInvertersCapacitorsHold: (capacitorHoldS: number) =>
-    `An inverter's capacitors hold the home run up: nothing is said for ${capacitorHoldS} s after the limit.`,
+  anInvertersCapacitorsHold: (capacitorHoldS: number, flowsFromA: number) =>
+    `An inverter's capacitors hold the home run up: unless more than ${number(flowsFromA, 1)} A flow, nothing is said for ${capacitorHoldS} s after the limit.`,
   stringsThatShareAn:
     'Strings that share an input share its voltage: which of them it is can not be told, and a held unit in one of silent strings shows as current only.',
   unitsThatMeasureTheir:

@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import { UNIT_PRESETS } from '../equipment/unit-type';
-import { judgeInput, seenPassing, STEADY_S, type InputReading } from './conductors';
+import { FLOWS_FROM_A, judgeInput, seenPassing, STEADY_S, type InputReading } from './conductors';
 import { commandedSpans, judgementTimes, type CommandPoint, type StringContext } from './context';
 import { UNCHANGED } from './evidence';
 import { judgeFrame, sweepString } from './judge';
@@ -51,6 +51,18 @@ describe('a home run that stays up', () => {
       kind: 'not_shutting_down',
       evidence: { scope: 'string', thresholdV: 30, ofN: 10, units: 2 },
     });
+  });
+  it('is named right after the time limit while current flows: no capacitor gives that', () => {
+    const context = contextOf('monitored', [released, pressed], 10);
+    const memory = newMemory(context);
+    judgeFrame(memory, context, { atS: NOON + 20, state: new Array<number>(10).fill(2) });
+    const at = (afterS: number, currentA: number | null) =>
+      judgeInput(memory, context, reading(NOON + afterS, 355, { currentA })).finding;
+    expect([at(29, 10.8), at(31, FLOWS_FROM_A), at(32, null), at(33, -3)]).toEqual([null, null, null, null]);
+    expect(at(34, 10.8)).toBeNull(); // one reading may be a stray
+    const finding = at(40, 10.8)?.finding;
+    expect(finding).toMatchObject({ kind: 'not_shutting_down', sinceS: NOON + 40 });
+    expect(finding!.evidence.couldBe?.join()).not.toContain('capacitors');
   });
   it('is left to the unit that says that it passes', () => {
     const context = contextOf('monitored', [released, pressed], 10);

@@ -25,6 +25,9 @@ export interface InputReading {
   module: { expectedV: number; relativeSd: number; siblings?: number } | null;
 }
 
+/** A, into the inverter: from here on modules feed the input; an idle one's own error is less. From experience. */
+export const FLOWS_FROM_A = 0.2;
+
 /** Readings that must agree before a finding begins or ends. The gravest needs two, for one may be a stray. */
 export const AGREEING: Record<StringFinding, number> = {
   not_shutting_down: 2,
@@ -85,7 +88,9 @@ function afterShutdown(
   voltageV: number,
 ): Suspicion | null | 'undecided' {
   const { timeLimitS, capacitorHoldS } = context.times;
-  if (input.atS < command.sinceS + timeLimitS + capacitorHoldS) return 'undecided';
+  // current through the string proves that it is not the capacitor
+  const holdS = flows(input) ? 0 : capacitorHoldS;
+  if (input.atS < command.sinceS + timeLimitS + holdS) return 'undecided';
   const units = unitCount(context);
   const { shutdownVoltage } = context.behaviour;
   const thresholdV = Math.max(OUTSIDE_ARRAY_LIMIT_V, 2 * units * shutdownVoltage.max);
@@ -109,7 +114,7 @@ function afterShutdown(
       ofN: units,
       atS: input.atS,
       confidence: alone ? 0.9 : 0.8,
-      couldBe: [...said.afterShutdownCouldBe],
+      couldBe: [...(flows(input) ? said.flowingCouldBe : said.afterShutdownCouldBe)],
     },
   };
 }
@@ -167,7 +172,7 @@ function countHeld(
   const units = unitCount(context);
   const { expectedV: per } = input.module;
   const { shutdownVoltage, bypassVoltage } = context.behaviour;
-  const underLoad = (input.currentA ?? 0) > 0.2;
+  const underLoad = flows(input);
   const heldV = underLoad ? bypassVoltage : shutdownVoltage.nominal;
   const full = units * per;
   const sd = relativeSdOf(input.module) * full;
@@ -200,6 +205,8 @@ function countHeld(
     },
   };
 }
+
+const flows = (input: InputReading): boolean => (input.currentA ?? 0) > FLOWS_FROM_A;
 
 /** Of a string's voltage about what is expected of it, both measured by inputs. */
 function relativeSdOf({ relativeSd, siblings = 0 }: NonNullable<InputReading['module']>): number {

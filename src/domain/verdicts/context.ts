@@ -60,7 +60,7 @@ export interface JudgementTimes {
   /** Changes of state without a command in `flapWindowS` that make `flapping`. */
   flapChanges: number;
   flapWindowS: number;
-  /** How long an inverter's capacitors may hold the home run up after the time limit. */
+  /** How long an inverter's capacitors may hold the home run up, without current, after the time limit. */
   capacitorHoldS: number;
 }
 

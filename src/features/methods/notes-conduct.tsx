@@ -6,6 +6,7 @@ import { OUTSIDE_ARRAY_LIMIT_V } from '../../domain/verdicts/conductor-limits';
 import {
   AGREEING,
   DEVIATIONS,
+  FLOWS_FROM_A,
   INPUTS_DIFFER,
   STEADY_DEVIATIONS,
   STEADY_S,
@@ -180,7 +181,7 @@ export const CONDUCT_NOTES: readonly Note[] = [
     where: notesConduct.heldUnitsAreCounted(STEADY_DEVIATIONS, STEADY_S, INPUTS_DIFFER),
     sources: [notesConduct.outsideTheArrayBoundary(OUTSIDE_ARRAY_LIMIT_V), notesConduct.twiceTheUnitsHighest],
     limits: [
-      notesConduct.anInvertersCapacitorsHold(MINUTELY.capacitorHoldS),
+      notesConduct.anInvertersCapacitorsHold(MINUTELY.capacitorHoldS, FLOWS_FROM_A),
       notesConduct.stringsThatShareAn,
       notesConduct.unitsThatMeasureTheir,
       notesConduct.aShadowThatStays,
