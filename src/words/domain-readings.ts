@@ -37,12 +37,15 @@ export const expectedStateSaid = {
   allInShutdown: 'every unit was heard and is in shutdown',
   someUnheard: (unheard: number) => `${unheard} units were not heard yet and pass full voltage`,
   allReleased: 'every unit is released and passes',
+  night: 'no voltage, for at night nothing powers the units',
 };
 
 /** What stands beside every reading that someone might act on. */
 export const readingCautions = {
   reading:
     'Shutdown is not isolation: each module and its leads to its unit stay at module voltage. Isolate, lock out and prove dead with a rated meter before you touch anything; local code and the authority having jurisdiction come first; qualified people only.',
+  litAtNight:
+    'A voltage, though the light is entered as night: is that right? Enter the light that is there and judge again; until then treat the string as live.',
   rollCall: 'Units that have not answered the roll call do not obey the initiator: treat the string as live.',
 };
 

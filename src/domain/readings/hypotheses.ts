@@ -42,7 +42,7 @@ export function hypothesesFor(question: ReadingQuestion): Hypothesis[] {
 
   const [kind, count] = mixed(p0);
   add(kind, count, p0, s0, PRIORS.asExpected);
-  list[0]!.asExpected = true;
+  list[0]!.asExpected = question.light !== 'night'; // without light no unit gives anything
   const others: number[] = [];
   for (let p = 0; p <= n; p++) if (p !== p0) others.push(p);
   const halving = (p: number): number => Math.pow(0.5, Math.abs(p - p0));

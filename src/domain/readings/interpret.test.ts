@@ -62,6 +62,19 @@ describe('readings on the first day', () => {
     expect(interpretReading(question({ light: 'night', voltageV: 0.02 })).outcome).toBe('proves_nothing');
     expect(interpretReading(question({ light: 'bright', voltageV: 0.02 })).hypotheses[0]!.kind).toBe('open');
   });
+  it('at night no voltage is expected, and a voltage asks whether the light is right', () => {
+    const monitored = { unitType: UNIT_PRESETS.monitored, heard: 14, commanded: 'released' as const };
+    const dark = interpretReading(question({ ...monitored, light: 'night', voltageV: 0.02 }));
+    expect(dark.expected).toContain('no voltage');
+    expect(dark.hypotheses.filter((h) => h.asExpected).map((h) => h.kind)).toEqual(['unpowered']);
+    expect(dark.cautions.join()).not.toContain('is that right?');
+    const lit = interpretReading(question({ ...monitored, light: 'night', voltageV: 560 }));
+    expect(lit.outcome).not.toBe('as_expected');
+    expect(lit.cautions[0]).toContain('entered as night: is that right?');
+    const day = interpretReading(question({ ...monitored, voltageV: 560 }));
+    expect(day.expected).toContain('passes');
+    expect(day.cautions.join()).not.toContain('night');
+  });
   it('one module past its unit and one unit passing read alike: both are named', () => {
     const answer = interpretReading(question({ conditions: AT_NOON, voltageV: voc + 13 * 0.6 }));
     expect(answer.outcome).toBe('cant_tell');

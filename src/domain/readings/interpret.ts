@@ -1,4 +1,4 @@
-import { interpretationSaid } from '../../words/domain-readings';
+import { expectedStateSaid, interpretationSaid, readingCautions } from '../../words/domain-readings';
 import { earthFinding, type EarthFinding } from './earth';
 import { posteriorOf, type Posterior } from './posterior';
 import { expectedState, type HypothesisKind, type ReadingQuestion } from './reading';
@@ -78,16 +78,22 @@ export function interpretReading(question: ReadingQuestion): Interpretation {
         ? 'as_expected'
         : 'finding';
   const deaf = state.unheardPassing;
+  const night = question.light === 'night';
+  const lit = night && best.kind !== 'unpowered' && best.kind !== 'open';
   return {
     outcome,
     headline: told ? best.words : interpretationSaid.cantTell(ranked[0]!.words, ranked[1]!.words),
-    expected: state.words,
+    expected: night ? expectedStateSaid.night : state.words,
     hypotheses: ranked.filter((h) => h.probability >= 0.001 || h.asExpected),
     likely,
     earth: earthFinding(question, alike),
     helped: helpOf(question, posterior),
     obeysInitiator: deaf === 0 ? true : deaf === question.units ? false : null,
-    cautions: deaf > 0 ? [ROLL_CALL_CAUTION, READING_CAUTION] : [READING_CAUTION],
+    cautions: [
+      ...(lit ? [readingCautions.litAtNight] : []),
+      ...(deaf > 0 ? [ROLL_CALL_CAUTION] : []),
+      READING_CAUTION,
+    ],
   };
 }
 
