@@ -86,7 +86,7 @@ export function AnswerSheet({ answer, question, waiting, faults }: Props) {
           <h3 className="font-semibold">{answerSheet.readingsToEarth}</h3>
           <p className={answer.earth.outcome === 'fault' ? 'font-medium text-rust-ink' : 'text-ink-2'}>
             {answer.earth.words}{' '}
-            {answer.earth.outcome === 'no_fault_seen'
+            {answer.earth.outcome === 'no_fault_seen' || answer.earth.probability === null
               ? ''
               : answerSheet.chanceOfFaultTo(chance(answer.earth.probability))}
           </p>

@@ -12,6 +12,15 @@ it('a string that shows a few volts to earth floats', () => {
   expect(found(412, 12, -9)?.outcome).toBe('no_fault_seen');
 });
 
+it('gives no chance of a fault until both readings are in', () => {
+  const of = (positiveV: number | null, negativeV: number | null, voltageV = 412) =>
+    earthFinding(question({ voltageV, earth: { positiveV, negativeV } }), true);
+  expect(of(2, null)).toMatchObject({ outcome: 'cant_tell', probability: null });
+  expect(of(null, -410)).toMatchObject({ outcome: 'cant_tell', probability: null });
+  expect(of(2, -3, 0.3)?.probability).toBeNull();
+  expect(of(2, -3)?.probability).toBeLessThan(0.05);
+});
+
 it('some passing and some in shutdown: a fault is a fault, and its place is not told', () => {
   // 3 of 14 pass: below the contact is one of them, above it two; the rest give 0.6 V each
   const voc = 38;

@@ -5,8 +5,8 @@ import type { ReadingQuestion } from './reading';
 
 export interface EarthFinding {
   outcome: 'no_fault_seen' | 'fault' | 'cant_tell';
-  /** Chance of a fault to earth. */
-  probability: number;
+  /** Chance of a fault to earth; null: one reading alone, or a string without voltage, gives none. */
+  probability: number | null;
   /** The fault lies between these positions (0: at the negative end of the string, n: at the positive end). */
   between: [number, number] | null;
   /** How likely that place is, given a fault. */
@@ -43,7 +43,7 @@ export function earthFinding(
   if (u < 1)
     return {
       outcome: 'cant_tell',
-      probability: PRIOR,
+      probability: null,
       between: null,
       placeProbability: 0,
       words: said.tooLittle,
@@ -82,7 +82,7 @@ export function earthFinding(
   if (outcome !== 'fault')
     return {
       outcome,
-      probability,
+      probability: taken ? probability : null,
       between: null,
       placeProbability: 0,
       words: outcome === 'no_fault_seen' ? said.floats : taken ? said.neither : said.takeBoth,
