@@ -27,15 +27,22 @@ export const interpretationSaid = {
     `Can't tell: ${first.toLowerCase()}, or ${second.toLowerCase()}`,
 };
 
+const noneHeard = 'the units were not heard yet: every one passes full voltage';
+
 /** What to expect before the meter is put on. */
 export const expectedStateSaid = {
   keepAlive: 'keep-alive is present: every unit passes',
   outOfTheBox: 'out of the box every unit passes',
   noKeepAlive: 'without keep-alive every unit is in shutdown',
   someUnheardInShutdown: (heard: number, unheard: number) =>
-    `${heard} units were heard and are in shutdown; ${unheard} were not heard and pass full voltage`,
+    heard === 0
+      ? noneHeard
+      : `${units(heard)} ${heard === 1 ? 'was heard and is' : 'were heard and are'} in shutdown; ${unheard} ${unheard === 1 ? 'was not heard and passes' : 'were not heard and pass'} full voltage`,
   allInShutdown: 'every unit was heard and is in shutdown',
-  someUnheard: (unheard: number) => `${unheard} units were not heard yet and pass full voltage`,
+  someUnheard: (heard: number, unheard: number) =>
+    heard === 0
+      ? noneHeard
+      : `${units(heard)} heard and ${unheard} not heard yet: all ${heard + unheard} pass full voltage`,
   allReleased: 'every unit is released and passes',
   night: 'no voltage, for at night nothing powers the units',
 };

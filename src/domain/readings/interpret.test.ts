@@ -105,6 +105,17 @@ describe('what is expected', () => {
     expect(monitored(10, 'released')).toMatchObject({ passing: 14, unheardPassing: 4 });
     expect(expectedState(question({ commanded: 'released' })).passing).toBe(14);
   });
+  it('names the units that were heard and those that were not, for both make the voltage', () => {
+    const words = (heard: number, commanded: 'released' | 'shutdown') =>
+      expectedState(question({ unitType: UNIT_PRESETS.monitored, units: 12, heard, commanded })).words;
+    expect(words(8, 'released')).toBe('8 units heard and 4 not heard yet: all 12 pass full voltage');
+    expect(words(1, 'released')).toBe('1 unit heard and 11 not heard yet: all 12 pass full voltage');
+    expect(words(11, 'shutdown')).toBe(
+      '11 units were heard and are in shutdown; 1 was not heard and passes full voltage',
+    );
+    for (const commanded of ['released', 'shutdown'] as const)
+      expect(words(0, commanded)).toBe('the units were not heard yet: every one passes full voltage');
+  });
 });
 
 describe('calibration over 5,000 simulated readings', () => {

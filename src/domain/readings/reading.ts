@@ -113,6 +113,6 @@ export function expectedState(question: ReadingQuestion): ExpectedState {
   return {
     passing: heard + unheardPassing,
     unheardPassing,
-    words: unheardPassing > 0 ? said.someUnheard(unheardPassing) : said.allReleased,
+    words: unheardPassing > 0 ? said.someUnheard(heard, unheardPassing) : said.allReleased,
   };
 }
