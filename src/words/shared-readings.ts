@@ -130,6 +130,8 @@ export const sharedReadingsWords = {
     `One unit in shutdown is worth ${nominal}, ${min} to ${max} by its type.`,
   measureAStringOf:
     'Measure a string of the same types beside it, now: it shows what one unit gives in this light.',
+  checkTypeAndRollCall:
+    'Units that nothing has spoken to yet should pass by the type entered, and these seem to be in shutdown: check the unit type and the roll call, then measure again.',
   measureAgainBeforeAnything: 'Measure again before anything is changed.',
   aLowImpedanceInput:
     'A low-impedance input pulls units in shutdown down: measure again with an ordinary one.',

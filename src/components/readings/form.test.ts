@@ -151,6 +151,15 @@ describe('what is said', () => {
     expect(initiatorWords(answer, question)).toMatch(/^No\. .*Treat the string as live/);
     expect(answer.cautions).toHaveLength(2);
   });
+  it('units in shutdown that nothing has spoken to: the type and the roll call are to be checked', () => {
+    const said = (some: Partial<ReadingForm>) => {
+      const { answer, question } = askedOf({ kind: 'monitored', commanded: 'released', ...some });
+      return reasoning(answer, question).join(' ');
+    };
+    expect(said({ heard: '0', v: '8.4' })).toContain('check the unit type and the roll call, then measure');
+    expect(said({ heard: '0', v: '480' })).not.toContain('check the unit type');
+    expect(said({ heard: '14', v: '8.4' })).not.toContain('check the unit type');
+  });
   it('full voltage though the keep-alive is off speaks against the initiator', () => {
     const { answer, question } = askedOf({ v: '480' });
     expect(initiatorWords(answer, question)).toMatch(/^The reading speaks against it/);

@@ -140,6 +140,7 @@ export function reasoning(answer: Interpretation, question: ReadingQuestion): st
         quantityV(unitType.shutdownVoltage.max, 2),
       ),
     );
+  if (obeysUnasked(answer, question)) sentences.push(sharedReadingsWords.checkTypeAndRollCall);
   if (answer.outcome === 'cant_tell' && siblings.length === 0)
     sentences.push(sharedReadingsWords.measureAStringOf);
   if (answer.outcome === 'cant_tell' && siblings.length > 0)
@@ -148,6 +149,15 @@ export function reasoning(answer: Interpretation, question: ReadingQuestion): st
     sentences.push(sharedReadingsWords.aLowImpedanceInput);
   if (voltageV < 0) sentences.push(sharedReadingsWords.theReadingIsNegative);
   return sentences;
+}
+/** Whether units seem to be in shutdown that nothing has spoken to and that should pass by their type. */
+function obeysUnasked({ outcome, hypotheses: [best] }: Interpretation, question: ReadingQuestion): boolean {
+  const { unheardPassing } = expectedState(question);
+  if (outcome !== 'finding' || best === undefined) return false;
+  return (
+    (best.kind === 'all_in_shutdown' && unheardPassing > 0) ||
+    (best.kind === 'some_passing' && best.count < unheardPassing)
+  );
 }
 const quantityV = (v: number, digits = 1): string => `${number(v, digits)}\u00a0V`;
 
