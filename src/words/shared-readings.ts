@@ -6,7 +6,7 @@ export const answerSheet = {
   whatItCanMean:
     'What it can mean is worked out at once, here in the browser. A negative reading is a finding, not a mistake.',
   whatItMeans: 'What it means: ',
-  thisIsWhatWas: 'This is what was expected.',
+  expectedWas: 'Expected was:',
   theBarsStandFor: 'The bars stand for the units: how many, not which. A meter tells no positions.',
   readingsToEarth: 'Readings to earth',
   chanceOfFaultTo: (probability: string) => `Chance of a fault to earth: ${probability}.`,

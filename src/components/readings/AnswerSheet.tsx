@@ -56,6 +56,7 @@ export function AnswerSheet({ answer, question, waiting, faults }: Props) {
       <ol className="space-y-3">
         {shown.map(({ h, comb }) => (
           <li key={`${h.kind} ${h.count}`}>
+            {h.asExpected && h !== best && <p className="text-sm text-ink-2">{answerSheet.expectedWas}</p>}
             <div className="flex items-start justify-between gap-3">
               <span className="text-[15px] font-semibold leading-5 tracking-[-0.01em]">{h.words}</span>
               <span className="shrink-0 text-[15px]">{chance(h.probability)}</span>
@@ -70,9 +71,6 @@ export function AnswerSheet({ answer, question, waiting, faults }: Props) {
               <div aria-hidden="true" className="mt-1.5">
                 <Units id={`likely-${h.kind}-${h.count}`} slots={comb} width={320} height={16} />
               </div>
-            )}
-            {h.asExpected && h !== best && (
-              <p className="mt-0.5 text-sm text-ink-2">{answerSheet.thisIsWhatWas}</p>
             )}
           </li>
         ))}
