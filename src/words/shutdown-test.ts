@@ -1,4 +1,4 @@
-import { listed, volts } from '../drawings/numbers';
+import { amperes, listed, volts } from '../drawings/numbers';
 import { clock, clockSeconds } from '../drawings/times';
 import { counted, figure } from './domain-counts';
 import { isOne } from './language';
@@ -254,7 +254,11 @@ export const shutdownTestPlanForm = {
 
 export const shutdownTestRound = {
   transmitter: (name: undefined | string) => name ?? 'transmitter',
-  invertersInputWhichIts: 'inverter’s input, which its capacitors hold up',
+  invertersInput: 'inverter’s input',
+  invertersInputHeldUp: 'inverter’s input; its capacitors may hold it up',
+  invertersInputFlows: (currentA: number, strings: number) =>
+    `inverter’s input; ${amperes(currentA)} flows: units ${isOne(strings) ? '' : `of its ${strings} strings `}pass`,
+  invertersInputTooLong: 'inverter’s input, up for longer than its capacitors hold it',
   atTheHomeRun: 'at the home run',
   sumOfWhatIts: 'sum of what its units report',
   nothingReported: 'nothing reported',

@@ -154,6 +154,14 @@ describe('a string by its input', () => {
       inputAgain: { afterS: 100, voltageV: 470 },
     });
   });
+  it('keeps the newest current while the command is in force', () => {
+    const flowing = inputs.map((i, n) => ({ ...i, currentA: [11, 10.9, 10.8, 10.7, 11][n]! }));
+    const current = (releaseS: number | null, list: typeof flowing | typeof inputs = flowing) =>
+      run([], { releaseS }, { inputs: list }).current;
+    expect(current(C + 100)).toEqual({ afterS: 90, currentA: 10.7 });
+    expect(current(C + 5)).toBeUndefined();
+    expect(current(C + 100, inputs)).toBeUndefined();
+  });
   it('gives sums only where every unit reported', () => {
     const seen = run([
       frame(-10, PASSING, 38),

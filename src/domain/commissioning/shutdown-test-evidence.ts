@@ -20,7 +20,7 @@ export interface StringReports {
   frames: readonly JudgedFrame[];
   traces: readonly ReportedTrace[];
   /** Of its input, oldest first. */
-  inputs: readonly { atS: number; voltageV: number }[];
+  inputs: readonly { atS: number; voltageV: number; currentA?: number | null }[];
 }
 export interface ConductTimes {
   /** When shutdown was commanded; null: nobody has said yet. */
@@ -71,6 +71,11 @@ export function conductOf(given: StringReports, times: ConductTimes): StringCond
       ? null
       : { afterS: last.atS - fromS, voltageV: last.voltageV };
   };
+  const newestSince =
+    commandS === null
+      ? undefined
+      : inputs.findLast((i) => i.atS > commandS && (releaseS === null || i.atS < releaseS));
+  const currentA = newestSince?.currentA ?? null;
   return {
     string: part.id,
     traces: reports.traces.map(({ unitV: _, startedS, voltage, ...t }) => ({
@@ -81,6 +86,9 @@ export function conductOf(given: StringReports, times: ConductTimes): StringCond
     units: part.serials.map((serial, i) => unitConduct(i + 1, serial, seen[i] ?? [], times)),
     reports: reports.frames.length + reports.traces.reduce((n, t) => n + t.voltage.length, 0),
     input: newest(during, commandS),
+    ...(newestSince && currentA !== null && commandS !== null
+      ? { current: { afterS: newestSince.atS - commandS, currentA } }
+      : {}),
     inputBeforeV: before.length === 0 ? null : Math.max(...before.map((i) => i.voltageV)),
     sums: commandS === null ? [] : sumsOf(reports, commandS),
     inputs:

@@ -314,6 +314,9 @@ export interface UnitConduct {
   /** Still in shutdown so many seconds after the release. */
   heldAtS: number | null;
 }
+/** A, from which a current through an input is one, and no offset of its meter; from experience. */
+export const FLOWS_A = 0.2;
+
 export interface StringConduct {
   string: string;
   traces: EvidenceTrace[];
@@ -322,6 +325,8 @@ export interface StringConduct {
   reports: number;
   /** Newest voltage of its input after the time limit and before the release. */
   input: { afterS: number; voltageV: number } | null;
+  /** Newest current of its input after the command and before the release; left out: not reported. */
+  current?: { afterS: number; currentA: number };
   /** Highest voltage of its input in the minute before the command. */
   inputBeforeV: number | null;
   /** Sums of its units' outputs where all were reported, [seconds from the command, V], before it too. */

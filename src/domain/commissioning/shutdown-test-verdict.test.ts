@@ -188,6 +188,21 @@ describe('the verdict of a test', () => {
       ]);
     expect(run(90).result).toBe('not_witnessed');
     expect(run(200)).toMatchObject({ result: 'failed', treatAsLive: [{ name: 'A1' }] });
+    // a current is no capacitor's
+    const flowing = (currentA: number, afterS: number) =>
+      judgeTest(facts([mute]), record(plan(['A1'])), [
+        seen(
+          conduct('A1', {
+            units,
+            inputBeforeV: 480,
+            input: { afterS: 40, voltageV: 210 },
+            current: { afterS, currentA },
+          }),
+        ),
+      ]).result;
+    expect(flowing(10.8, 40)).toBe('failed');
+    expect(flowing(10.8, 20)).toBe('not_witnessed');
+    expect(flowing(0.1, 40)).toBe('not_witnessed');
     // shared inputs: it can't be told which string it is, and each must be treated as live
     expect(run(200, { input: { name: 'x', strings: 2 } })).toMatchObject({
       result: 'not_witnessed',

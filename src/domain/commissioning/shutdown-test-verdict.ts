@@ -5,6 +5,7 @@ import { instrumentFaults, missing, notesOf } from './shutdown-test-remarks';
 import { homeRunLimit } from '../verdicts/conductor-limits';
 import { judgeString, limitSource, testHeadline, type StringTestResult } from './shutdown-test';
 import { WORST, type TestResult } from './test-results';
+import { FLOWS_A } from './shutdown-test-record';
 import type {
   RoundEvidence,
   StringConduct,
@@ -198,7 +199,12 @@ function conductFigures(
   const passing = units.filter((u) => u.passedAtS !== null && u.passedAtS >= timeLimitS).length;
   const limitV = Math.max(homeRunLimit(part.homeRunLeavesArray), 2 * part.shutdownV.max);
   const { input, inputBeforeV } = conduct;
-  const pastHold = input !== null && input.afterS >= timeLimitS + capacitorHoldS;
+  // capacitors hold a voltage up, no current: where one flows past the limit, units pass it
+  const flows =
+    conduct.current !== undefined &&
+    conduct.current.afterS >= timeLimitS &&
+    conduct.current.currentA > FLOWS_A;
+  const pastHold = input !== null && input.afterS >= timeLimitS + (flows ? 0 : capacitorHoldS);
   const up = pastHold && input.voltageV > limitV && passing === 0;
   return {
     units: units.length,

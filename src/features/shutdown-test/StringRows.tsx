@@ -25,7 +25,6 @@ function Now({ s, timeLimitS, sinceS }: { s: StringNow; timeLimitS: number; sinc
   if (!s.newest) return <span className="text-ink-2">{stringRows.nothingReported}</span>;
   const over = s.newest.volts > s.limitV;
   const late = s.newest.afterS >= timeLimitS;
-  const input = s.source.startsWith('inverter');
   return (
     <span className="inline-flex flex-wrap items-center gap-x-2">
       <span className="tabular-nums">
@@ -36,7 +35,7 @@ function Now({ s, timeLimitS, sinceS }: { s: StringNow; timeLimitS: number; sinc
         <Tag tone="plum" shape="▁">
           {stringRows.limitVvOrLess(s.limitV, s.underFromS, Math.ceil(s.underFromS))}
         </Tag>
-      ) : over && late && !input ? (
+      ) : over && late && !s.capacitors ? (
         <Tag tone="crimson" shape="▲">
           {stringRows.overPast(s.limitV, timeLimitS)}
         </Tag>

@@ -1,3 +1,5 @@
+import { judgementTimes, timeLimitOf } from '../../domain/verdicts/context';
+import { FLOWS_A } from '../../domain/commissioning/shutdown-test-record';
 import { homeRunLimit } from '../../domain/verdicts/conductor-limits';
 import type {
   EvidenceTrace,
@@ -66,6 +68,8 @@ export interface StringNow {
   points: [number, number | null][];
   /** Where the points come from, in words. */
   source: string;
+  /** Its input stands over the limit, and its capacitors may be all that holds it up. */
+  capacitors: boolean;
   newest: { afterS: number; volts: number } | null;
   /** Seconds from which it stayed at or under its limit before the release; null: not so. */
   underFromS: number | null;
@@ -85,15 +89,36 @@ function pointsOf(conduct: StringConduct, fromS: number): Pick<StringNow, 'point
       points: [...rest.filter(([s]) => s < start), ...traced, ...rest.filter(([s]) => s > untilS)],
       source:
         trace.measuringPoint === 'input'
-          ? shutdownTestRound.invertersInputWhichIts
+          ? shutdownTestRound.invertersInput
           : trace.measuringPoint === 'home_run'
             ? shutdownTestRound.atTheHomeRun
             : shutdownTestRound.sumOfWhatIts,
     };
   if (conduct.sums.length > 0) return { points: conduct.sums, source: shutdownTestRound.sumOfWhatIts };
-  if (conduct.inputs.length > 0)
-    return { points: conduct.inputs, source: shutdownTestRound.invertersInputWhichIts };
+  if (conduct.inputs.length > 0) return { points: conduct.inputs, source: shutdownTestRound.invertersInput };
   return { points: [], source: shutdownTestRound.nothingReported };
+}
+
+/** What an input's newest voltage while the command is in force comes from. */
+function inputSays(
+  facts: TestFacts,
+  part: TestedPart,
+  conduct: StringConduct | undefined,
+  [afterS, voltageV]: [number, number],
+  limitV: number,
+): { words: string; capacitors: boolean } {
+  if (voltageV <= limitV) return { words: shutdownTestRound.invertersInput, capacitors: false };
+  const { timeLimitS } = timeLimitOf(facts.ruleSet);
+  const current = conduct?.current;
+  // one from much earlier says nothing of this voltage
+  if (current && current.currentA > FLOWS_A && afterS - current.afterS <= facts.reportIntervalS)
+    return {
+      words: shutdownTestRound.invertersInputFlows(current.currentA, part.input.strings),
+      capacitors: false,
+    };
+  return afterS < timeLimitS + judgementTimes(facts.reportIntervalS, timeLimitS).capacitorHoldS
+    ? { words: shutdownTestRound.invertersInputHeldUp, capacitors: true }
+    : { words: shutdownTestRound.invertersInputTooLong, capacitors: false };
 }
 
 /** What is known of each string of a round, in the order of the as-built. */
@@ -122,11 +147,18 @@ export function stringsOfRound(
         else underFromS ??= s;
       }
       const last = known.at(-1);
+      const input = source === shutdownTestRound.invertersInput;
+      const standing = known.findLast(([s]) => releaseS === null || s < releaseS);
+      const byInput =
+        input && standing && last === standing
+          ? inputSays(facts, part, conduct, standing, limitV)
+          : { words: source, capacitors: false };
       return {
         part,
         conduct,
         points,
-        source,
+        source: byInput.words,
+        capacitors: byInput.capacitors,
         newest: last ? { afterS: last[0], volts: last[1] } : null,
         underFromS,
         limitV,
@@ -186,13 +218,11 @@ export function linesOf(
       (p): p is [number, number] => p[1] !== null && p[0] >= 0 && (releaseS === null || p[0] < releaseS),
     );
     const last = beforeRelease.at(-1);
-    // capacitors hold an input up: that is no unit that passes
-    const byUnits = !s.source.startsWith('inverter');
     return {
       name: s.part.name,
       points: s.points,
       tone:
-        last && last[0] >= timeLimitS && last[1] > s.limitV && byUnits
+        last && last[0] >= timeLimitS && last[1] > s.limitV && !s.capacitors
           ? 'live'
           : last && last[1] <= s.limitV
             ? 'fallen'

@@ -255,6 +255,29 @@ describe('a round in figures', () => {
       'fallen',
     );
   });
+  it('blames the capacitors of an input only without current and while they may hold it up', () => {
+    const flows = (currentA: number, afterS = 40) => ({ current: { afterS, currentA } });
+    const said = (inputs: [number, number][], more: object = {}, r = round) => {
+      const [row] = rows(seen([], { inputs, ...more }), r);
+      const tone = linesOf([row!], 30, r.released ? 50 : null)[0]!.tone;
+      return [row!.source.replaceAll('\u00a0', ' '), tone];
+    };
+    const held = 'inverter’s input; its capacitors may hold it up';
+    expect(said([[45, 210]])).toEqual([held, 'open']);
+    expect(said([[45, 210]], flows(0.1))).toEqual([held, 'open']);
+    expect(said([[45, 210]], flows(10.9))).toEqual(['inverter’s input; 10.9 A flows: units pass', 'live']);
+    expect(said([[149, 210]], flows(10.9))).toEqual([held, 'open']); // of two minutes ago
+    expect(said([[150, 210]])).toEqual([
+      'inverter’s input, up for longer than its capacitors hold it',
+      'live',
+    ]);
+    expect(said([[45, 8]])).toEqual(['inverter’s input', 'fallen']);
+    const back: [number, number][] = [
+      [45, 8],
+      [70, 410],
+    ];
+    expect(said(back, flows(9), { ...round, released: stamp(50) })).toEqual(['inverter’s input', 'fallen']);
+  });
   it('lets a person note a time only until the logger has reported it', () => {
     const began = Date.parse('2026-06-01T10:00:00Z') / 1000;
     const untapped = { ...round, operated: null };

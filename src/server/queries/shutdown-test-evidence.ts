@@ -210,13 +210,16 @@ export async function tracesIn(tx: Tx, stringIds: readonly number[], span: Span)
   return rows;
 }
 
-export async function inputsIn(
-  tx: Tx,
-  inputIds: readonly number[],
-  span: Span,
-): Promise<{ inputId: number; atS: number; voltageV: number }[]> {
-  const { rows } = await tx.raw<{ rows: { inputId: number; atS: number; voltageV: number }[] }>(
-    `select input_id as "inputId", extract(epoch from at)::float8 as "atS", voltage / 10.0::float8 as "voltageV"
+export interface InputRow {
+  inputId: number;
+  atS: number;
+  voltageV: number;
+  currentA: number | null;
+}
+export async function inputsIn(tx: Tx, inputIds: readonly number[], span: Span): Promise<InputRow[]> {
+  const { rows } = await tx.raw<{ rows: InputRow[] }>(
+    `select input_id as "inputId", extract(epoch from at)::float8 as "atS", voltage / 10.0::float8 as "voltageV",
+            current / 100.0::float8 as "currentA"
      from input_frame where input_id = any (cast(:ids as int4[])) and voltage is not null and at between :from and :to
      order by at`,
     { ids: [...inputIds], ...span },
