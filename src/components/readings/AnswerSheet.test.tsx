@@ -3,9 +3,9 @@ import { expect, it } from 'vitest';
 import { interpretReading } from '../../domain/readings/interpret';
 import { AnswerSheet } from './AnswerSheet';
 import { readForm } from './form';
-import { DEFAULTS, type ReadingForm } from './form-choices';
+import { DEFAULTS } from './form-choices';
 
-const shownOf = (some: Partial<ReadingForm>): string => {
+const shownOf = (some: Readonly<Record<string, string>>): string => {
   const { question } = readForm({ ...DEFAULTS, ...some });
   const answer = question && interpretReading(question);
   return renderToStaticMarkup(
