@@ -241,6 +241,20 @@ describe('a shutdown test against the plant', { timeout: 120_000 }, () => {
     expect(page.verdict.treatAsLive.map((s) => s.name)).toEqual(['A1']);
   });
 
+  it('fails by the current of its input where a whole mute string passes, capacitors or not', async () => {
+    const { page } = await run({
+      site: 'Mute',
+      faults: Array.from({ length: 8 }, (_, i) => ({
+        kind: 'not_shutting_down' as const,
+        string: 'A1',
+        position: i + 1,
+      })),
+    });
+    expect(page.evidence[0]!.strings[0]!.current!.currentA).toBeGreaterThan(1);
+    expect(page.evidence[0]!.strings[0]!.current!.currentA).toBeLessThan(20);
+    expect(page.verdict.treatAsLive.map((s) => s.name)).toContain('A1');
+  });
+
   it('does not witness a mute string that nobody measures in a short test', async () => {
     const { page } = await run({ site: 'Mute', shutForS: 40 });
     expect(page.verdict.strings.every((s) => s.result !== 'passed' && s.result !== 'failed')).toBe(true);
