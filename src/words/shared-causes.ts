@@ -34,8 +34,7 @@ export const sharedCausesFinding = {
     `The shutdown of ${lowerFirst} ${causes} can't be confirmed`,
   whoSingleSilent: (who: string, single: boolean) => `${who} ${single ? 'is' : 'are'} silent`,
   treatEveryStringAs: (at: string) => `Treat every string ${at} as live and call the site.`,
-  theyHoldBackPower: (at: string) =>
-    `They hold back power ${at}; the causes below say which part they share.`,
+  theyHoldBackPower: (at: string) => `Power is held back ${at}; the causes below say which part is shared.`,
   treatTheirStringsAs: (at: string) =>
     `Treat their strings ${at} as live until a rated meter shows otherwise.`,
   whetherTheyFollowShutdown: (at: string) =>

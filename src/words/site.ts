@@ -134,6 +134,7 @@ export const stringsSheet = {
   string: 'String',
   units: 'Units',
   voltage: 'Voltage',
+  ofThoseHeard: 'of the units heard',
   inShutdown: (expectedInShutdown: number) => `${volts(expectedInShutdown)} in shutdown`,
   withEveryUnitIn: 'with every unit in shutdown, by the type entered',
   expectedVoltageExpected: (expectedVoltage: number) => `${volts(expectedVoltage)} expected`,

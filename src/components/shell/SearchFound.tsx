@@ -62,7 +62,7 @@ export function SearchFound({ q, open, listId, chosen, onFound }: Props) {
   return (
     <div
       hidden={!open || found.note === ''}
-      className="absolute right-0 z-40 mt-1 w-[min(420px,calc(100vw-32px))] border border-t-2 border-rule border-t-ink bg-sheet"
+      className="fixed inset-x-4 z-40 mt-1 border border-t-2 border-rule border-t-ink bg-sheet sm:absolute sm:left-auto sm:right-0 sm:w-[420px]"
     >
       <ul id={listId} role="listbox" aria-label={shellSearch.found}>
         {found.results.map((result, i) => (

@@ -103,7 +103,10 @@ const columnsFor = (site: string): Column<StringNow>[] => [
     cell: (string) => (
       <>
         {volts(string.voltage)}
-        {string.expectedInShutdown !== null ? (
+        {hearingOf(string).heard < hearingOf(string).units && string.voltage !== null ? (
+          // the others' voltage is not in the sum: it is held against nothing
+          <span className="block text-xs text-ink-2">{stringsSheet.ofThoseHeard}</span>
+        ) : string.expectedInShutdown !== null ? (
           <span className="block text-xs text-ink-2" title={stringsSheet.withEveryUnitIn}>
             {stringsSheet.inShutdown(string.expectedInShutdown)}
           </span>

@@ -51,7 +51,14 @@ export function siteFinding(
         causes.filter((c) => c.verdict === worst),
         site,
       ),
-      sentence: `${WHAT_TO_DO[worst](siteFindingWords.here)} ${making(site, at)}`,
+      sentence: [
+        WHAT_TO_DO[worst](siteFindingWords.here),
+        // a hazard says it by itself
+        counts.unheard > 0 && worst !== 'not_shutting_down' ? siteFindingWords.untilTheRollCall : '',
+        making(site, at),
+      ]
+        .filter(Boolean)
+        .join(' '),
     };
   if (!site.loggerConnected)
     return {

@@ -27,6 +27,13 @@ describe("a site's finding", () => {
     expect(siteFinding(school, [all], NOW).heading).toBe('All 312 units are stuck in shutdown');
   });
 
+  it('keeps saying what is live while units have not answered, whatever else is wrong', () => {
+    const half = site('Hall', { counts: counts({ units: 184, passing: 155, stuck: 1, unheard: 28 }) });
+    expect(siteFinding(half, [cause('stuck', 'Hall', [unitOf('B3', 4)])], NOW).sentence).toMatch(
+      /^Power is held back here.+Until the roll call is complete, treat every string as live\..+kW/,
+    );
+  });
+
   it('speaks of strings where positions are unknown, and of the part where nothing else is', () => {
     const whole = cause('not_shutting_down', 'Kestrel Row School', [unitOf('C2', null)]);
     expect(siteFinding(school, [whole], NOW).heading).toBe('One string did not shut down');
