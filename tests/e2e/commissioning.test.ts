@@ -205,7 +205,9 @@ describe('the owner of a roof', () => {
     // nothing to operate: only a report of what looks wrong can be sent
     expect(await page.getByRole('button').allInnerTexts()).toEqual([expect.stringMatching(/^Send to /)]);
 
-    for (const path of ['/', '/commissioning', '/shutdown', hallPath(), `/sites/${fleet.site(CLINIC).ref}`]) {
+    await page.goto(site.url);
+    await page.waitForURL(`**/my-site/${fleet.site(CLINIC).ref}`); // the bare address leads there
+    for (const path of ['/commissioning', '/shutdown', hallPath(), `/sites/${fleet.site(CLINIC).ref}`]) {
       const response = await page.goto(site.url + path);
       expect(response?.status(), path).toBe(403);
       expect(await page.locator('body').innerText()).not.toContain(HALL);

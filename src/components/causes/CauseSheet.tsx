@@ -8,10 +8,16 @@ import { StateTag } from '../states/StateTag';
 import { Tag } from '../ui/Tag';
 import { siteClock, useReaderZone } from '../ui/reader-zone';
 import { Acknowledge } from './Acknowledge';
+import { later } from '../../lib/later';
 import { placesInWords, placesOf, positionsInWords } from './places';
 import { alternativesInWords, isHazard, treatAsLive } from './words';
 import { causeSheet } from '../../words/shared-causes';
 import { capital } from '../../words/domain-counts';
+
+const Taking = later(
+  async () => (await import('./Acknowledge')).Acknowledge,
+  import.meta.env.SSR ? Acknowledge : null,
+);
 
 interface Props {
   cause: CauseNow;
@@ -114,7 +120,7 @@ export const CauseSheet = memo(function CauseSheet({
           </a>
         </p>
         {isHazard(cause) && (
-          <Acknowledge
+          <Taking
             cause={cause}
             contact={contact}
             taken={taken}

@@ -1,6 +1,7 @@
 import { timeLimitSources } from '../../words/domain-verdicts-evidence';
 import type { UnitType } from '../equipment/unit-type';
 import type { InForce } from './codes';
+import { CAPACITOR_HOLD_S, timeLimitSOf } from './time-limits';
 
 /** What the judgement of one string is made against: everything that isn't in its frames. Times are epoch seconds. */
 
@@ -68,7 +69,7 @@ export type RuleSet = 'rapid_shutdown_30s' | 'rapid_shutdown_10s' | 'hazard_cont
 
 /** The time limit of a rule set and where it comes from. Without one, 30 s is used as a yardstick and said to be one. */
 export function timeLimitOf(ruleSet: RuleSet): { timeLimitS: number; source: string } {
-  return { timeLimitS: ruleSet === 'rapid_shutdown_10s' ? 10 : 30, source: timeLimitSources[ruleSet] };
+  return { timeLimitS: timeLimitSOf(ruleSet), source: timeLimitSources[ruleSet] };
 }
 
 /** Default times for a report interval: grace of two reports, 30 s at least, so that the third report decides. */
@@ -81,7 +82,7 @@ export function judgementTimes(reportIntervalS: number, timeLimitS: number): Jud
     stringWakeGraceS: 7200, // from experience: heavy cloud or frost on the glass
     flapChanges: 4,
     flapWindowS: 3600,
-    capacitorHoldS: 120, // from experience; the inverter's sheet may say more
+    capacitorHoldS: CAPACITOR_HOLD_S,
   };
 }
 

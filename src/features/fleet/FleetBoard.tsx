@@ -33,6 +33,11 @@ const Since = later(
   import.meta.env.SSR ? SinceLastLook : null,
 );
 
+const More = later(
+  async () => (await import('../../components/ui/ShowMore')).ShowMore,
+  import.meta.env.SSR ? ShowMore : null,
+);
+
 interface Props {
   initial: Sent<FleetNow>;
   /** Of a large fleet, of which `initial` is the first page; null: it is all. */
@@ -126,7 +131,7 @@ export const FleetBoard = unpacking(function FleetBoard({
               />
             ))}
           </div>
-          <ShowMore
+          <More
             shown={shownCauses.length}
             of={causes.length}
             what={fleetBoard.causes}
@@ -165,7 +170,7 @@ export const FleetBoard = unpacking(function FleetBoard({
               onClear={() => change({ q: '', stage: 'any', show: 'all' })}
             />
           </Sheet>
-          <ShowMore
+          <More
             shown={Math.min(most, lines.length)}
             of={partly?.lines ?? lines.length}
             what={fleetBoard.sites2}

@@ -1,17 +1,14 @@
-import { Suspense, useState, type FormEvent } from 'react';
-import { useMutation } from '@tanstack/react-query';
+import { Suspense, useState } from 'react';
 import { Button } from '../../components/ui/Button';
 import { Caution } from '../../components/ui/Caution';
-import { Dialog } from '../../components/ui/Dialog';
-import { Field } from '../../components/ui/Field';
 import { Heading } from '../../components/ui/Heading';
 import { Notice } from '../../components/ui/Notice';
 import { nextRound, openRound, type TestRecord } from '../../domain/commissioning/shutdown-test-record';
-import { ApiError, api } from '../../lib/api';
 import { late, useSoon } from '../../lib/late';
-import { queryClient } from '../../lib/query-client';
+import { later } from '../../lib/later';
 import { paths } from '../../schemas/paths';
 import type { ShutdownTestPage } from '../../schemas/api/shutdown-test';
+import { EndTest } from './EndTest';
 import { roundName } from './round';
 import { useTest, type TestInHand } from './use-test';
 import { stepWords } from './words';
@@ -25,7 +22,9 @@ const PlanStep = late(plan);
 const CautionStep = late(caution);
 const RoundStep = late(round);
 const SignStep = late(sign);
-const STEPS = [plan, caution, round, sign];
+const ending = async () => (await import('./EndTest')).EndTest;
+const Ending = later(ending, import.meta.env.SSR ? EndTest : null);
+const SOON = [plan, caution, round, sign, ending];
 
 type Step = 'plan' | 'caution' | 'sign' | number;
 
@@ -45,7 +44,7 @@ interface Props {
 /** A shutdown test, step by step, on the phone and at the desk. */
 export function GuidedTest({ initial, person, mayRun }: Props) {
   const test = useTest(initial, person.id);
-  useSoon(STEPS);
+  useSoon(SOON);
   const { page, record } = test;
   const [chosen, setChosen] = useState<Step | null>(null);
   const due = dueStep(record);
@@ -109,7 +108,7 @@ export function GuidedTest({ initial, person, mayRun }: Props) {
           </ol>
           {mayWrite && (
             <div className="hidden lg:block">
-              <EndTest test={test} />
+              <Ending test={test} />
             </div>
           )}
         </nav>
@@ -184,7 +183,7 @@ export function GuidedTest({ initial, person, mayRun }: Props) {
           </Suspense>
           {mayWrite && (
             <div className="mt-4 lg:hidden">
-              <EndTest test={test} />
+              <Ending test={test} />
             </div>
           )}
         </div>
@@ -266,49 +265,5 @@ function Told({ test }: { test: TestInHand }) {
         </Notice>
       ))}
     </div>
-  );
-}
-
-function EndTest({ test }: { test: TestInHand }) {
-  const [open, setOpen] = useState(false);
-  const [reason, setReason] = useState('');
-  const end = useMutation(
-    {
-      mutationFn: () =>
-        api<void>(paths.api.shutdownTestEnd(test.page.id), { method: 'POST', body: { reason } }),
-      onSuccess: () => window.location.assign(paths.shutdownTests(test.page.site.id)),
-    },
-    queryClient(),
-  );
-  const submit = (event: FormEvent) => {
-    event.preventDefault();
-    end.mutate();
-  };
-  const fault = end.error instanceof ApiError ? (end.error.fault('reason') ?? end.error.message) : undefined;
-  return (
-    <>
-      <button
-        type="button"
-        className="target mt-2 text-sm text-petrol underline underline-offset-2"
-        onClick={() => setOpen(true)}
-      >
-        {guidedTest.endWithoutSigning}
-      </button>
-      <Dialog open={open} title={guidedTest.endThisTestWithout} onClose={() => setOpen(false)}>
-        <form onSubmit={submit} noValidate>
-          <p className="mb-3">{guidedTest.whatWasWrittenStays}</p>
-          <Field
-            label={guidedTest.why}
-            maxLength={2000}
-            value={reason}
-            error={fault}
-            onChange={(e) => setReason(e.target.value)}
-          />
-          <Button type="submit" weight="primary" className="mt-3" disabled={end.isPending}>
-            {guidedTest.endTheTest}
-          </Button>
-        </form>
-      </Dialog>
-    </>
   );
 }

@@ -1,5 +1,5 @@
-import { judgementTimes, timeLimitOf } from '../../domain/verdicts/context';
 import { FLOWS_A } from '../../domain/commissioning/shutdown-test-record';
+import { CAPACITOR_HOLD_S, timeLimitSOf } from '../../domain/verdicts/time-limits';
 import { homeRunLimit } from '../../domain/verdicts/conductor-limits';
 import type {
   EvidenceTrace,
@@ -108,7 +108,6 @@ function inputSays(
   limitV: number,
 ): { words: string; capacitors: boolean } {
   if (voltageV <= limitV) return { words: shutdownTestRound.invertersInput, capacitors: false };
-  const { timeLimitS } = timeLimitOf(facts.ruleSet);
   const current = conduct?.current;
   // one from much earlier says nothing of this voltage
   if (current && current.currentA > FLOWS_A && afterS - current.afterS <= facts.reportIntervalS)
@@ -116,7 +115,7 @@ function inputSays(
       words: shutdownTestRound.invertersInputFlows(current.currentA, part.input.strings),
       capacitors: false,
     };
-  return afterS < timeLimitS + judgementTimes(facts.reportIntervalS, timeLimitS).capacitorHoldS
+  return afterS < timeLimitSOf(facts.ruleSet) + CAPACITOR_HOLD_S
     ? { words: shutdownTestRound.invertersInputHeldUp, capacitors: true }
     : { words: shutdownTestRound.invertersInputTooLong, capacitors: false };
 }
